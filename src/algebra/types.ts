@@ -1,0 +1,53 @@
+/**
+ * The coefficient field: exact values built from rationals, named constants, parameters and functions of them.
+ * An element is a quotient of polynomials over Q in "kernels" (pi, sqrt 2, log 3, a, a^alpha, exp(a), Gamma(a), ...), in a normal form;
+ * zero is decided by the normal form, non-zero by balls at rising precision, and "undecided" is an answer.
+ */
+import type { Expression, Rational } from '../expression/index.ts';
+
+export type Truth = 'yes' | 'no' | 'undecided';
+export type Sign = -1 | 0 | 1 | 'undecided' | 'complex';
+
+/** Opaque, immutable. Plain rationals are represented by themselves so that the common case stays fast. */
+export type Element = Rational | CompoundElement;
+export interface CompoundElement {
+  readonly compound: unknown;
+}
+
+/** All operations in one context of assumptions. Assumptions that a result rests on are collected in `needed`. */
+export interface Field {
+  readonly needed: ReadonlySet<string>;
+  /** Throws Declined('unknown-function' | 'undecided' | 'needs-assumption') where the tree has no exact value in the field. */
+  fromExpression(e: Expression): Element;
+  /** As a person writes it: common factors out, log 2 not log(4)/2, sqrt(2)/2, parameters in the order first seen. */
+  toExpression(a: Element): Expression;
+  rational(value: Rational | bigint | number): Element;
+  /** The imaginary unit. */
+  readonly i: Element;
+  asRational(a: Element): Rational | null;
+  add(a: Element, b: Element): Element;
+  subtract(a: Element, b: Element): Element;
+  negate(a: Element): Element;
+  multiply(a: Element, b: Element): Element;
+  /** Throws Declined when b is zero or not provably non-zero. */
+  divide(a: Element, b: Element): Element;
+  /** a^exponent, principal value; exponent may be any element. */
+  power(a: Element, exponent: Element): Element;
+  exp(a: Element): Element;
+  log(a: Element): Element;
+  /** f(args) for any function of the registry: special values and identities where known, else a kernel. */
+  call(id: string, args: readonly Element[]): Element;
+  isZero(a: Element): Truth;
+  /** Sign under the assumptions; 'complex' if provably not real. */
+  sign(a: Element): Sign;
+  isReal(a: Element): Truth;
+  equal(a: Element, b: Element): Truth;
+  /** Sign of a - b: used to order exponents. */
+  compare(a: Element, b: Element): Sign;
+  /** Records that the result needs this (protocol notation, `a > 0`). */
+  require(assumption: string): void;
+  /** Names of free parameters. */
+  parameters(a: Element): readonly string[];
+  /** Structural key; equal keys imply equal values. */
+  key(a: Element): string;
+}

@@ -1,0 +1,64 @@
+/** A truncated expansion as exact data: what expand/ answers and everything after it consumes. */
+import type { Expression, Rational } from '../expression/index.ts';
+
+/** coefficient * t^power * L^log * scale, with t the local variable and L its logarithm (conventions: protocol). */
+export interface ExpansionTerm {
+  readonly coefficient: Expression;
+  /** Exact; a rational number node unless exponents are symbolic. */
+  readonly power: Expression;
+  readonly log: number;
+  /** A further factor on another scale (exp(-x), log(log(x))^2, cos(x - pi/4)), written in the variable; null if none. */
+  readonly scale: Expression | null;
+}
+
+export interface ExpansionRemainder {
+  /** Null where the scale is not a power of t. */
+  readonly power: Expression | null;
+  readonly log: number;
+  readonly scale: Expression | null;
+}
+
+export interface Expansion {
+  /** The function expanded, as understood. */
+  readonly function: Expression;
+  readonly variable: Expression;
+  /** The point: an exact expression, or 'inf' / '-inf'. */
+  readonly point: Expression | 'inf' | '-inf';
+  readonly side: 'both' | 'right' | 'left';
+  /** The tree for t in the variable: x, x - a, a - x, 1/x. */
+  readonly local: Expression;
+  /** The tree for L in the variable. */
+  readonly logarithm: Expression;
+  /** Only where the leading behaviour is not c t^p L^k: terms and remainder are inside it. */
+  readonly prefactor: Expression | null;
+  /** In decreasing size. */
+  readonly terms: readonly ExpansionTerm[];
+  /** Null only for an exact sum. */
+  readonly remainder: ExpansionRemainder | null;
+  readonly exact: boolean;
+  readonly divergent: boolean;
+  readonly oscillating: boolean;
+  /** In protocol notation (`a > 0`). */
+  readonly assumptions: readonly string[];
+  readonly general?: Expression;
+  /** Radius of convergence in t (null: infinite) and a nearest singularity, where proven. */
+  readonly radius?: { readonly value: Expression | null; readonly nearest?: Expression };
+  /** The other side, where it differs (this one is then the right side). */
+  readonly left?: Expansion;
+  readonly branches?: readonly Expansion[];
+}
+
+export type Assumption =
+  | { readonly kind: 'relation'; readonly left: Expression; readonly relation: '<' | '<=' | '>' | '>=' | '!=' | '='; readonly right: Expression }
+  | { readonly kind: 'domain'; readonly symbol: string; readonly domain: 'integer' | 'real' | 'complex' };
+
+export interface ExpansionProblem {
+  readonly function: Expression;
+  readonly variable: Expression;
+  readonly point: Expression | 'inf' | '-inf';
+  readonly side: 'both' | 'right' | 'left';
+  /** Exactly one of the two. */
+  readonly terms?: number;
+  readonly order?: Rational;
+  readonly assumptions: readonly Assumption[];
+}

@@ -1,0 +1,5 @@
+export * from './expression.ts';
+export * as build from './build.ts';
+export * as Q from './rational.ts';
+export type { Rational } from './rational.ts';
+export { children, dependsOn, freeSymbols, mapChildren, sameExpression, structureKey, substitute, walk } from './traverse.ts';

@@ -1,0 +1,267 @@
+/**
+ * The engine's contract: one request, one answer, both JSON. Editor, webview, command line and tests all speak it.
+ * The conventions (local variable, side, values) are stated in DEVELOPERS.md, "The engine's protocol". Offsets count UTF-16 code units.
+ */
+
+interface CommonRequest {
+  readonly id?: string | number;
+  /** The text and its VS Code language identifier, or `plain`. */
+  readonly text: string;
+  readonly language: string;
+  /** As written in the text (`x`, `\epsilon`, `\frac{v}{c}`); may be left out where the text shows only one candidate. */
+  readonly variable?: string;
+  /** Instead of `variable`: several small quantities, with weights (`\epsilon ~ \theta^2`) or an order (`y << x`). */
+  readonly small?: readonly string[];
+  /** Non-zero base points of the small quantities, by name. */
+  readonly points?: Readonly<Record<string, string>>;
+  /** `0` (default), `inf`, `-inf`, or an exact expression. */
+  readonly point?: string;
+  readonly side?: Side;
+  readonly unknown?: string;
+  readonly near?: string;
+  readonly complex?: boolean;
+  readonly assume?: readonly string[];
+  readonly budget_ms?: number;
+}
+
+export type Side = 'both' | 'right' | 'left';
+export type Measure = 'absolute' | 'relative';
+export type FitMeasure = Measure | 'ulp';
+
+export interface ExpandRequest extends CommonRequest {
+  readonly ask: 'expand';
+  /** Number of monomials t^p L^k; default 4. Exclusive with `order`. */
+  readonly terms?: number;
+  /** Keep every term t^q with q < order. A number or an exact rational (`7/2`). */
+  readonly order?: number | string;
+  /** Closed interval, exact ends. */
+  readonly interval?: readonly [string, string];
+  readonly tolerance?: number | string;
+  readonly measure?: Measure;
+  /** A value at which function, sum and error are wanted. */
+  readonly at?: string;
+}
+
+export interface FitRequest extends CommonRequest {
+  readonly ask: 'fit';
+  readonly interval: readonly [string, string];
+  readonly tolerance?: number | string;
+  readonly degree?: number;
+  readonly measure?: FitMeasure;
+  /** `binary32`, `binary64`, `binary16`, `bfloat16`, `fixed:m.n`. */
+  readonly format?: string;
+  readonly emit?: string;
+  readonly basis?: 'even' | 'odd' | 'all';
+  readonly form?: 'horner' | 'estrin';
+  readonly contraction?: 'any' | 'none' | 'fma';
+  readonly method?: 'minimax' | 'taylor' | 'economized' | 'rational';
+  readonly pieces?: number | 'auto';
+}
+
+export interface GuardRequest extends CommonRequest {
+  readonly ask: 'guard';
+  readonly interval?: readonly [string, string];
+  readonly format?: string;
+  readonly emit?: string;
+  readonly tolerance?: number | string;
+  /** Assumed error of each library call in ulp; default 1. */
+  readonly library?: number;
+}
+
+export interface CheckRequest extends CommonRequest {
+  readonly ask: 'check';
+  /** The function, where the text holds only its expansion. */
+  readonly of?: string;
+}
+
+export type Request = ExpandRequest | FitRequest | GuardRequest | CheckRequest;
+
+export interface TermAnswer {
+  readonly coefficient: string;
+  readonly power: string;
+  readonly log: number;
+  readonly scale?: string;
+}
+
+export interface RemainderAnswer {
+  readonly latex: string;
+  /** Null where the scale is not a power. */
+  readonly power: string | null;
+  readonly log: number;
+}
+
+export interface NumericAnswer {
+  readonly syntax: 'mpmath';
+  readonly sum: string;
+  readonly scale: string;
+  /** Name in `sum` and `scale` -> its LaTeX. */
+  readonly symbols: Readonly<Record<string, string>>;
+}
+
+export interface BoundAnswer {
+  /** Decimal, rounded up; null where the remainder is unbounded on the interval. */
+  readonly value: string | null;
+  /** Proven lower bound of the supremum, rounded down. */
+  readonly lower: string | null;
+  readonly method: string;
+  /** With free parameters the bound is value * factor. */
+  readonly factor?: string;
+  /** Where the remainder is unbounded. */
+  readonly place?: string;
+  /** Steps of the proof, in a form a reader can re-check. */
+  readonly proof?: readonly string[];
+}
+
+export interface NeededAnswer {
+  readonly terms: number | null;
+  readonly order?: string;
+  readonly bound?: string;
+  readonly minimal?: boolean;
+  readonly reason?: string;
+  readonly estimate?: number;
+  readonly best?: { readonly terms: number; readonly bound: string };
+  readonly reach?: { readonly distance: string; readonly closed: boolean };
+  /** Degree of a fitted polynomial that would keep the tolerance, where no truncated expansion does. */
+  readonly fittedDegree?: number;
+}
+
+export interface LadderRow {
+  readonly terms: number;
+  readonly order: string;
+  readonly bound: string | null;
+}
+
+/** For a number of terms: the largest proven distance from the point within which the tolerance holds. */
+export interface ReachRow {
+  readonly terms: number;
+  readonly order: string;
+  /** Decimal rounded down; `inf` where the sum is exact. */
+  readonly distance: string | null;
+}
+
+export interface ExpandAnswer {
+  readonly id?: string | number;
+  readonly ok: true;
+  readonly terms: readonly TermAnswer[];
+  readonly prefactor?: string;
+  readonly remainder: RemainderAnswer | null;
+  readonly exact: boolean;
+  readonly latex: string;
+  /** One line of Unicode. */
+  readonly text: string;
+  readonly numeric: NumericAnswer;
+  readonly general?: string;
+  readonly radius?: { readonly value: string; readonly nearest?: string };
+  readonly divergent?: boolean;
+  readonly oscillating?: boolean;
+  readonly assumptions: readonly string[];
+  readonly bound?: BoundAnswer;
+  readonly needed?: NeededAnswer;
+  readonly ladder?: readonly LadderRow[];
+  readonly reach?: readonly ReachRow[];
+  readonly at?: { readonly argument: string; readonly function: string; readonly sum: string; readonly error: string; readonly percent: string | null };
+  readonly left?: ExpandAnswer;
+  readonly branches?: readonly ExpandAnswer[];
+  readonly value?: { readonly low: string; readonly high: string };
+  /** What was understood: function, variable, point, and where each came from. */
+  readonly reading?: ReadingAnswer;
+  /** Samples of function and partial sum over the interval, doubles, for drawing only. */
+  readonly plot?: PlotAnswer;
+}
+
+export interface ReadingAnswer {
+  readonly latex: string;
+  readonly start: number;
+  readonly end: number;
+  readonly variable: string;
+  readonly variableLatex: string;
+  readonly point: string;
+  readonly pointLatex: string;
+  readonly side: Side;
+  /** Other symbols and dimensionless ratios that could be the small quantity. */
+  readonly candidates: readonly string[];
+}
+
+export interface PlotAnswer {
+  readonly x: readonly number[];
+  readonly f: readonly (number | null)[];
+  readonly sum: readonly (number | null)[];
+}
+
+export type Verdict = 'holds' | 'fails' | 'undecided';
+export interface Finding {
+  /** The wrong piece (the whole claim where it holds). */
+  readonly start: number;
+  readonly end: number;
+  readonly claim: { readonly start: number; readonly end: number };
+  readonly verdict: Verdict;
+  readonly severity: 'error' | 'hint' | 'none';
+  readonly reason: string;
+  /** What is right, in the author's notation, where it is known. */
+  readonly found: string;
+  readonly fix: { readonly start: number; readonly end: number; readonly text: string } | null;
+  /** `\label` or equation number near the claim. */
+  readonly label?: string;
+}
+export interface CheckAnswer {
+  readonly id?: string | number;
+  readonly ok: true;
+  readonly findings: readonly Finding[];
+  /** Formulas that could not be read, never a failure. */
+  readonly unread: readonly { readonly start: number; readonly end: number; readonly reason: string }[];
+}
+
+export interface CoefficientAnswer {
+  readonly power: number;
+  readonly value: string;
+  readonly hex: string;
+}
+export interface FitBound {
+  readonly approximation: string;
+  readonly rounding: string;
+  readonly evaluation: string;
+  readonly total: string;
+  readonly method: string;
+  readonly measure: FitMeasure;
+  readonly subnormal?: string;
+}
+export interface FitAnswer {
+  readonly id?: string | number;
+  readonly ok: true;
+  readonly coefficients: readonly CoefficientAnswer[];
+  readonly degree: number;
+  readonly bound: FitBound;
+  readonly code: string;
+  readonly taylorDegree: number | null;
+  readonly assumptions?: readonly string[];
+  readonly operations?: { readonly multiplications: number; readonly additions: number; readonly fused: number };
+}
+
+export interface GuardAnswer {
+  readonly id?: string | number;
+  readonly ok: true;
+  readonly forms: readonly { readonly text: string; readonly bound: string }[];
+  readonly ranges: readonly { readonly from: string; readonly to: string; readonly form: string; readonly bound: string }[];
+  readonly switch: string | null;
+  readonly terms: number | null;
+  readonly bound: { readonly series: string | null; readonly direct: string | null; readonly whole: string };
+  readonly code: string;
+  readonly assumptions: readonly string[];
+}
+
+export type ErrorCode = 'unreadable' | 'unknown-function' | 'no-expansion' | 'needs-assumption' | 'undecided' | 'over-budget' | 'bad-request';
+export interface Failure {
+  readonly code: ErrorCode;
+  /** One plain sentence that says what to do next. */
+  readonly message: string;
+  readonly start?: number;
+  readonly end?: number;
+}
+export interface ErrorAnswer {
+  readonly id?: string | number;
+  readonly ok: false;
+  readonly error: Failure;
+}
+
+export type Answer = ExpandAnswer | FitAnswer | GuardAnswer | CheckAnswer | ErrorAnswer;
+export type AnswerTo<R extends Request> = R extends ExpandRequest ? ExpandAnswer | ErrorAnswer : R extends FitRequest ? FitAnswer | ErrorAnswer : R extends GuardRequest ? GuardAnswer | ErrorAnswer : CheckAnswer | ErrorAnswer;

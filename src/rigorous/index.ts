@@ -1,0 +1,1 @@
+export type { Ball, ComplexBall, Interval } from './ball.types.ts';

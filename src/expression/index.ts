@@ -1,4 +1,5 @@
 export * from './expression.ts';
+export { PLAIN_STYLE, type DocumentStyle, type OrderStyle } from './style.ts';
 export * as build from './build.ts';
 export * as Q from './rational.ts';
 export type { Rational } from './rational.ts';

@@ -40,7 +40,14 @@ export interface ExpandRequest extends CommonRequest {
   readonly measure?: Measure;
   /** A value at which function, sum and error are wanted. */
   readonly at?: string;
+  /** Cursor or selection in `text`, where the text is a whole document and the expression has to be found in it. */
+  readonly selection?: { readonly start: number; readonly end: number };
+  /** Parts of the answer that cost extra time and are only made when asked for. */
+  readonly details?: readonly Detail[];
 }
+
+/** `reading`: what was understood. `ladder`: bounds for 1..n terms. `reach`: proven distances for 2, 3, 4 terms. `plot`: samples. */
+export type Detail = 'reading' | 'ladder' | 'reach' | 'plot';
 
 export interface FitRequest extends CommonRequest {
   readonly ask: 'fit';

@@ -1,0 +1,155 @@
+/** The host's end: starts the worker on first use, keeps one request in it at a time, cancels by ending the worker, and starts a fresh one when it dies. */
+import type { Answer, ErrorAnswer, Request } from '../protocol.ts';
+import type { FromWorker, ToWorker } from './messages.ts';
+
+/** A running worker as a host sees it. */
+export interface WorkerHandle {
+  post(message: ToWorker): void;
+  end(): void;
+}
+export interface WorkerEvents {
+  message(message: FromWorker): void;
+  /** The worker ended by itself or threw. */
+  died(reason: string): void;
+}
+export interface ClientOptions {
+  /** May be asynchronous: the web host first reads the script. */
+  readonly start: (events: WorkerEvents) => WorkerHandle | Promise<WorkerHandle>;
+  /** Bundled files (grammars) by name; null where there is none. */
+  readonly readFile: (name: string) => Promise<Uint8Array | null>;
+  readonly log?: (line: string) => void;
+  /** Time beyond a request's own budget after which the worker is ended, in milliseconds. */
+  readonly grace?: number;
+}
+
+interface Job {
+  readonly request: Request;
+  readonly settle: (answer: Answer) => void;
+  readonly signal: AbortSignal | undefined;
+  cancelled: boolean;
+}
+
+export interface EngineClient {
+  /** Never rejects: every failure is an answer. A cancelled request is answered `over-budget`. */
+  ask<A extends Answer>(request: Request, signal?: AbortSignal): Promise<A | ErrorAnswer>;
+  readonly busy: boolean;
+  dispose(): void;
+}
+
+const DEFAULT_BUDGET = 5000;
+
+export function createEngineClient(options: ClientOptions): EngineClient {
+  const queue: Job[] = [];
+  let current: { readonly job: Job; readonly ticket: number; timer: ReturnType<typeof setTimeout> | undefined } | null = null;
+  let worker: WorkerHandle | null = null;
+  let generation = 0;
+  let ticket = 0;
+  let disposed = false;
+
+  const refuse = (job: Job, message: string): void =>
+    job.settle({ ...(job.request.id === undefined ? {} : { id: job.request.id }), ok: false, error: { code: 'over-budget', message } });
+
+  const drop = (): void => {
+    generation += 1;
+    worker?.end();
+    worker = null;
+    if (current?.timer) clearTimeout(current.timer);
+    current = null;
+  };
+
+  const start = async (): Promise<WorkerHandle> => {
+    const mine = generation;
+    const stale = (): boolean => mine !== generation;
+    const handle = await options.start({
+      message: (message) => {
+        if (stale()) return;
+        if (message.kind === 'wantFile') {
+          void options.readFile(message.name).then(
+            (bytes) => handle.post({ kind: 'file', name: message.name, bytes }),
+            () => handle.post({ kind: 'file', name: message.name, bytes: null }),
+          );
+          return;
+        }
+        if (message.kind === 'answer' && current?.ticket === message.ticket) {
+          const { job, timer } = current;
+          if (timer) clearTimeout(timer);
+          current = null;
+          job.settle(message.answer);
+          void pump();
+        }
+      },
+      died: (reason) => {
+        if (stale()) return;
+        options.log?.(`engine ended: ${reason}`);
+        const lost = current?.job;
+        drop();
+        if (lost) refuse(lost, 'The engine stopped during this request and has been restarted; try again.');
+        void pump();
+      },
+    });
+    if (stale()) handle.end();
+    return handle;
+  };
+
+  const pump = async (): Promise<void> => {
+    if (current || disposed) return;
+    const job = queue.shift();
+    if (!job) return;
+    if (job.cancelled) {
+      refuse(job, 'This request was cancelled.');
+      return pump();
+    }
+    ticket += 1;
+    const mine = ticket;
+    const entry = { job, ticket: mine, timer: undefined as ReturnType<typeof setTimeout> | undefined };
+    current = entry;
+    try {
+      worker ??= await start();
+    } catch (error) {
+      if (current === entry) current = null;
+      refuse(job, `The engine could not be started: ${error instanceof Error ? error.message : String(error)}.`);
+      return pump();
+    }
+    if (current !== entry) return;
+    const limit = (job.request.budget_ms ?? DEFAULT_BUDGET) + (options.grace ?? 2000);
+    entry.timer = setTimeout(() => {
+      if (current !== entry) return;
+      options.log?.(`request ended after ${limit} ms`);
+      drop();
+      refuse(job, `This took longer than ${job.request.budget_ms ?? DEFAULT_BUDGET} ms; ask for fewer terms or allow more time.`);
+      void pump();
+    }, limit);
+    worker.post({ kind: 'ask', ticket: mine, request: job.request });
+  };
+
+  return {
+    ask: (request, signal) =>
+      new Promise((resolve) => {
+        const job: Job = { request, settle: (answer) => resolve(answer as never), signal, cancelled: signal?.aborted ?? false };
+        if (disposed) return refuse(job, 'The engine has been shut down.');
+        signal?.addEventListener(
+          'abort',
+          () => {
+            job.cancelled = true;
+            if (current?.job === job) {
+              drop();
+              refuse(job, 'This request was cancelled.');
+              void pump();
+            }
+          },
+          { once: true },
+        );
+        queue.push(job);
+        void pump();
+      }),
+    get busy() {
+      return current !== null || queue.length > 0;
+    },
+    dispose: () => {
+      disposed = true;
+      const left = [...(current ? [current.job] : []), ...queue.splice(0)];
+      drop();
+      for (const job of left) refuse(job, 'The engine has been shut down.');
+    },
+  };
+}

@@ -1,0 +1,17 @@
+/** What passes between a host (editor, command line) and the engine's worker. Plain structured-clone data both ways. */
+import type { Answer, Request } from '../protocol.ts';
+
+export type ToWorker =
+  | { readonly kind: 'ask'; readonly ticket: number; readonly request: Request }
+  | { readonly kind: 'file'; readonly name: string; readonly bytes: Uint8Array | null };
+
+export type FromWorker =
+  | { readonly kind: 'answer'; readonly ticket: number; readonly answer: Answer }
+  /** The worker has no file system: it asks its host for a bundled file (a grammar) by name. */
+  | { readonly kind: 'wantFile'; readonly name: string };
+
+/** The two ends of a channel, whatever carries it. */
+export interface Port<Sent, Received> {
+  post(message: Sent): void;
+  listen(handler: (message: Received) => void): void;
+}

@@ -1,5 +1,6 @@
 /** The host's end: starts the worker on first use, keeps one request in it at a time, cancels by ending the worker, and starts a fresh one when it dies. */
 import type { Answer, ErrorAnswer, Request } from '../protocol.ts';
+import type { DeskAnswer, DeskAnswerTo, DeskRequest } from './desk/types.ts';
 import type { FromWorker, ToWorker } from './messages.ts';
 
 /** A running worker as a host sees it. */
@@ -23,8 +24,8 @@ export interface ClientOptions {
 }
 
 interface Job {
-  readonly request: Request;
-  readonly settle: (answer: Answer) => void;
+  readonly request: Request | DeskRequest;
+  readonly settle: (answer: Answer | DeskAnswer) => void;
   readonly signal: AbortSignal | undefined;
   cancelled: boolean;
 }
@@ -32,11 +33,14 @@ interface Job {
 export interface EngineClient {
   /** Never rejects: every failure is an answer. A cancelled request is answered `over-budget`. */
   ask<A extends Answer>(request: Request, signal?: AbortSignal): Promise<A | ErrorAnswer>;
+  /** The same for what an editor asks beyond the engine's protocol. */
+  consult<R extends DeskRequest>(request: R, signal?: AbortSignal): Promise<DeskAnswerTo<R> | ErrorAnswer>;
   readonly busy: boolean;
   dispose(): void;
 }
 
 const DEFAULT_BUDGET = 5000;
+const budgetOf = (request: Request | DeskRequest): number => ('budget_ms' in request ? request.budget_ms : undefined) ?? DEFAULT_BUDGET;
 
 export function createEngineClient(options: ClientOptions): EngineClient {
   const queue: Job[] = [];
@@ -47,7 +51,7 @@ export function createEngineClient(options: ClientOptions): EngineClient {
   let disposed = false;
 
   const refuse = (job: Job, message: string): void =>
-    job.settle({ ...(job.request.id === undefined ? {} : { id: job.request.id }), ok: false, error: { code: 'over-budget', message } });
+    job.settle({ ...('id' in job.request && job.request.id !== undefined ? { id: job.request.id } : {}), ok: false, error: { code: 'over-budget', message } });
 
   const drop = (): void => {
     generation += 1;
@@ -111,37 +115,41 @@ export function createEngineClient(options: ClientOptions): EngineClient {
       return pump();
     }
     if (current !== entry) return;
-    const limit = (job.request.budget_ms ?? DEFAULT_BUDGET) + (options.grace ?? 2000);
+    const budget = budgetOf(job.request);
+    const limit = budget + (options.grace ?? 2000);
     entry.timer = setTimeout(() => {
       if (current !== entry) return;
       options.log?.(`request ended after ${limit} ms`);
       drop();
-      refuse(job, `This took longer than ${job.request.budget_ms ?? DEFAULT_BUDGET} ms; ask for fewer terms or allow more time.`);
+      refuse(job, `This took longer than ${budget} ms; ask for fewer terms or allow more time.`);
       void pump();
     }, limit);
     worker.post({ kind: 'ask', ticket: mine, request: job.request });
   };
 
+  const enqueue = (request: Request | DeskRequest, signal: AbortSignal | undefined): Promise<Answer | DeskAnswer> =>
+    new Promise((resolve) => {
+      const job: Job = { request, settle: resolve, signal, cancelled: signal?.aborted ?? false };
+      if (disposed) return refuse(job, 'The engine has been shut down.');
+      signal?.addEventListener(
+        'abort',
+        () => {
+          job.cancelled = true;
+          if (current?.job === job) {
+            drop();
+            refuse(job, 'This request was cancelled.');
+            void pump();
+          }
+        },
+        { once: true },
+      );
+      queue.push(job);
+      void pump();
+    });
+
   return {
-    ask: (request, signal) =>
-      new Promise((resolve) => {
-        const job: Job = { request, settle: (answer) => resolve(answer as never), signal, cancelled: signal?.aborted ?? false };
-        if (disposed) return refuse(job, 'The engine has been shut down.');
-        signal?.addEventListener(
-          'abort',
-          () => {
-            job.cancelled = true;
-            if (current?.job === job) {
-              drop();
-              refuse(job, 'This request was cancelled.');
-              void pump();
-            }
-          },
-          { once: true },
-        );
-        queue.push(job);
-        void pump();
-      }),
+    ask: (request, signal) => enqueue(request, signal) as Promise<never>,
+    consult: (request, signal) => enqueue(request, signal) as Promise<never>,
     get busy() {
       return current !== null || queue.length > 0;
     },

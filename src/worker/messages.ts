@@ -1,12 +1,13 @@
 /** What passes between a host (editor, command line) and the engine's worker. Plain structured-clone data both ways. */
 import type { Answer, Request } from '../protocol.ts';
+import type { DeskAnswer, DeskRequest } from './desk/types.ts';
 
 export type ToWorker =
-  | { readonly kind: 'ask'; readonly ticket: number; readonly request: Request }
+  | { readonly kind: 'ask'; readonly ticket: number; readonly request: Request | DeskRequest }
   | { readonly kind: 'file'; readonly name: string; readonly bytes: Uint8Array | null };
 
 export type FromWorker =
-  | { readonly kind: 'answer'; readonly ticket: number; readonly answer: Answer }
+  | { readonly kind: 'answer'; readonly ticket: number; readonly answer: Answer | DeskAnswer }
   /** The worker has no file system: it asks its host for a bundled file (a grammar) by name. */
   | { readonly kind: 'wantFile'; readonly name: string };
 

@@ -1,24 +1,25 @@
 /** The engine behind a message port. Answers requests one at a time, in the order they came; knows no file system, no DOM, no editor. */
 import { createEngine } from '../engine.ts';
+import { createDesk } from './desk/index.ts';
 import type { FromWorker, Port, ToWorker } from './messages.ts';
 
 export function serve(port: Port<FromWorker, ToWorker>): void {
   const waiting = new Map<string, ((bytes: Uint8Array) => void)[]>();
   const refused = new Map<string, ((reason: Error) => void)[]>();
-  const engine = createEngine({
-    loadFile: (name) =>
-      new Promise<Uint8Array>((resolve, reject) => {
-        const queue = waiting.get(name);
-        if (queue) {
-          queue.push(resolve);
-          refused.get(name)?.push(reject);
-          return;
-        }
-        waiting.set(name, [resolve]);
-        refused.set(name, [reject]);
-        port.post({ kind: 'wantFile', name });
-      }),
-  });
+  const loadFile = (name: string): Promise<Uint8Array> =>
+    new Promise<Uint8Array>((resolve, reject) => {
+      const queue = waiting.get(name);
+      if (queue) {
+        queue.push(resolve);
+        refused.get(name)?.push(reject);
+        return;
+      }
+      waiting.set(name, [resolve]);
+      refused.set(name, [reject]);
+      port.post({ kind: 'wantFile', name });
+    });
+  const engine = createEngine({ loadFile });
+  const desk = createDesk({ engine, loadFile });
   let last: Promise<void> = Promise.resolve();
   port.listen((message) => {
     if (message.kind === 'file') {
@@ -31,7 +32,7 @@ export function serve(port: Port<FromWorker, ToWorker>): void {
     }
     const { ticket, request } = message;
     last = last.then(async () => {
-      port.post({ kind: 'answer', ticket, answer: await engine.ask(request) });
+      port.post({ kind: 'answer', ticket, answer: 'desk' in request ? await desk.ask(request) : await engine.ask(request) });
     });
   });
 }

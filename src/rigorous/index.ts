@@ -1,1 +1,2 @@
 export type { Ball, ComplexBall, Interval } from './ball.types.ts';
+export * as real from './real.ts';

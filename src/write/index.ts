@@ -1,0 +1,7 @@
+/** Trees and expansions -> text. Everything here is total and pure: any tree can be written. */
+export { toLatex } from './latex.ts';
+export { toUnicode } from './unicode.ts';
+export { NumericSymbols, toMpmath } from './mpmath.ts';
+export { toPlain } from './plain.ts';
+export { continuationLatex, equationLatex, expansionLatex, expansionNumeric, expansionText, remainderLatex, remainderText } from './expansion.ts';
+export { expansionTree, remainderArgument, termsTree, termTree } from './expansionTree.ts';

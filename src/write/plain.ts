@@ -1,0 +1,64 @@
+/** Expression -> the exact strings of the protocol: plain notation that the plain reader reads back to the same value. */
+import { Q, type ConstantName, type Expression } from '../expression/index.ts';
+import { atom, Binding, enclosed, LINEAR_RELATIONS, type Dialect, type Piece, writeLinear } from './linear.ts';
+
+const CONSTANTS: Readonly<Record<ConstantName, string>> = { pi: 'pi', e: 'exp(1)', i: 'I', eulerGamma: 'euler', catalan: 'catalan', glaisher: 'glaisher', infinity: 'inf' };
+
+/** `-17/45`, `sqrt(2)/2`, `a^(3/2)`, `log(2)`, `I*pi/2`. Total; cost linear in the text. */
+export function toPlain(expression: Expression): string {
+  return writeLinear(expression, PLAIN).text;
+}
+
+const list = (args: readonly Expression[], write: (e: Expression) => Piece): string => args.map((a) => write(a).text).join(', ');
+
+const PLAIN: Dialect = {
+  minus: '-',
+  times: '*',
+  spaceAroundSum: true,
+  number: (value) => (value.den === 1n ? atom(`${value.num}`) : { text: `${value.num}/${value.den}`, binding: Binding.Product }),
+  constant: (name) => atom(CONSTANTS[name]),
+  symbol: (name) => atom(plainSymbol(name)),
+  power(base, exponent, write) {
+    if (base.kind === 'constant' && base.name === 'e') return atom(`exp(${write(exponent).text})`);
+    if (exponent.kind === 'number' && Q.equal(exponent.value, Q.HALF)) return atom(`sqrt(${write(base).text})`);
+    return { text: `${enclosed(write(base), Binding.Atom)}^${enclosed(write(exponent), Binding.Atom)}`, binding: Binding.Power };
+  },
+  root: (degree, radicand, write) =>
+    degree.kind === 'number' && degree.value.num === 3n ? atom(`cbrt(${write(radicand).text})`) : atom(`root(${write(radicand).text}, ${write(degree).text})`),
+  call: (id, args, write) => atom(`${id}(${list(args, write)})`),
+  other(e, write) {
+    const bare = (inner: Expression): string => write(inner).text;
+    switch (e.kind) {
+      case 'apply': {
+        const marks = e.derivatives.length <= 1 ? "'".repeat(e.derivatives[0] ?? 0) : e.derivatives.some((d) => d > 0) ? `^(${e.derivatives.join(',')})` : '';
+        return atom(`${plainSymbol(e.name)}${marks}(${list(e.args, write)})`);
+      }
+      case 'order':
+        return atom(`${e.little ? 'o' : 'O'}(${bare(e.argument)})`);
+      case 'dots':
+        return atom('...');
+      case 'derivative':
+        return atom(`diff(${bare(e.body)}, ${bare(e.variable)}${e.times === 1 ? '' : `, ${e.times}`})`);
+      case 'integral':
+        return atom(`int(${[e.body, e.variable, ...(e.lower ? [e.lower] : []), ...(e.upper ? [e.upper] : [])].map(bare).join(', ')})`);
+      case 'indexedSum':
+      case 'indexedProduct':
+        return atom(`${e.kind === 'indexedSum' ? 'sum' : 'product'}(${[e.body, e.index, e.lower, e.upper].map(bare).join(', ')})`);
+      case 'limit':
+        return atom(`limit(${[e.body, e.variable, e.target].map(bare).join(', ')})`);
+      case 'piecewise':
+        return atom(`piecewise(${e.branches.map((b) => (b.condition ? `${bare(b.condition)}, ${bare(b.value)}` : bare(b.value))).join(', ')})`);
+      case 'relation':
+        return { text: e.sides.map((s) => enclosed(write(s), Binding.Sum)).reduce((left, right, i) => `${left} ${LINEAR_RELATIONS[e.relations[i - 1] ?? '=']} ${right}`), binding: Binding.Relation };
+      case 'vector':
+        return e.operation === 'symbol' ? atom(plainSymbol(e.name ?? 'v')) : atom(`${e.operation}(${list(e.args, write)})`);
+      default:
+        return write(e);
+    }
+  },
+};
+
+/** Greek by its word, subscripts without braces. */
+function plainSymbol(name: string): string {
+  return name.replace(/\\([A-Za-z]+)\s*/g, '$1').replace(/\{([^{}]*)\}/g, '$1').replace(/\s+/g, '_');
+}

@@ -4,14 +4,26 @@
  * zero is decided by the normal form, non-zero by balls at rising precision, and "undecided" is an answer.
  */
 import type { Expression, Rational } from '../expression/index.ts';
+import type { Monomial } from './monomial.ts';
+import type { Polynomial } from './polynomial.ts';
 
 export type Truth = 'yes' | 'no' | 'undecided';
 export type Sign = -1 | 0 | 1 | 'undecided' | 'complex';
 
 /** Opaque, immutable. Plain rationals are represented by themselves so that the common case stays fast. */
 export type Element = Rational | CompoundElement;
+/** content * monomial * numerator / product of polynomial^exponent over `denominator`. The fields are the room's own affair: build and read elements through a Field. */
 export interface CompoundElement {
-  readonly compound: unknown;
+  readonly compound: 'quotient';
+  readonly content: Rational;
+  readonly monomial: Monomial;
+  readonly numerator: Polynomial;
+  readonly denominator: readonly DenominatorFactor[];
+}
+export interface DenominatorFactor {
+  readonly polynomial: Polynomial;
+  /** At least 1. */
+  readonly exponent: number;
 }
 
 /** All operations in one context of assumptions. Assumptions that a result rests on are collected in `needed`. */

@@ -1,5 +1,5 @@
 /** A truncated expansion as exact data: what expand/ answers and everything after it consumes. */
-import type { Expression, Rational } from '../expression/index.ts';
+import type { Assumption, Expression, Rational } from '../expression/index.ts';
 
 /** coefficient * t^power * L^log * scale, with t the local variable and L its logarithm (conventions: protocol). */
 export interface ExpansionTerm {
@@ -48,9 +48,7 @@ export interface Expansion {
   readonly branches?: readonly Expansion[];
 }
 
-export type Assumption =
-  | { readonly kind: 'relation'; readonly left: Expression; readonly relation: '<' | '<=' | '>' | '>=' | '!=' | '='; readonly right: Expression }
-  | { readonly kind: 'domain'; readonly symbol: string; readonly domain: 'integer' | 'real' | 'complex' };
+export type { Assumption };
 
 export interface ExpansionProblem {
   readonly function: Expression;

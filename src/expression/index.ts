@@ -1,3 +1,4 @@
+export type { Assumption, AssumptionRelation } from './assumption.ts';
 export * from './expression.ts';
 export { PLAIN_STYLE, type DocumentStyle, type OrderStyle } from './style.ts';
 export * as build from './build.ts';

@@ -6,7 +6,7 @@ import type { Rational } from '../expression/index.ts';
 import type { Ball } from './ball.types.ts';
 import {
   absolute, absoluteUpper, add, containsZero, divide, exponentOf, fromEnds, fromInteger, fromRational, intersection, isExact, isNonNegative, isPositive, lowerEnd, midpoint, multiply, negate, nearestInteger,
-  ONE, powerInteger, radius, reciprocal, round, rounded, scaleByPowerOfTwo, subtract, union, upperEnd, withRadius, ZERO,
+  ONE, powerInteger, radius, reciprocal, relativeAccuracy, round, rounded, scaleByPowerOfTwo, subtract, subtractExact, union, upperEnd, withRadius, ZERO,
 } from './ball.ts';
 import { bitLength, magnitude, rootFloor, shiftFloor, squareRootFloor } from './bits.ts';
 import { exponential, inverseTangent, logarithm, logTwoFixed, piFixed, sineCosine } from './fixed.ts';
@@ -31,9 +31,10 @@ const byDerivative = (value: Ball, x: Ball, derivativeBound: Ball): Ball =>
 
 /** f increasing: the ends decide. */
 function increasing(f: (x: Ball, precision: number) => Ball | null, x: Ball, precision: number): Ball | null {
-  const low = f(lowerEnd(x), precision);
-  const high = f(upperEnd(x), precision);
-  return low === null || high === null ? null : fromEnds(low, high, precision);
+  const bits = relativeAccuracy(x) > 20 ? precision : Math.min(precision, 64);
+  const low = f(lowerEnd(x), bits);
+  const high = f(upperEnd(x), bits);
+  return low === null || high === null ? null : fromEnds(low, high, bits);
 }
 
 function expExact(x: Ball, precision: number): Ball | null {
@@ -54,7 +55,7 @@ function expExact(x: Ball, precision: number): Ball | null {
 
 export function exp(x: Ball, precision: number): Ball | null {
   if (isExact(x)) return expExact(x, precision);
-  if (exponentOf(radius(x)) > -6) return increasing(expExact, x, Math.min(precision, 64));
+  if (exponentOf(radius(x)) > -6) return increasing(expExact, x, precision);
   const value = expExact(midpoint(x), precision);
   // |e^y - e^m| <= e^m (e^r - 1) <= 2 r e^m for r <= 1.
   return value === null ? null : byDerivative(value, x, scaleByPowerOfTwo(absoluteUpper(value), 1));
@@ -79,13 +80,12 @@ function logExact(x: Ball, precision: number): Ball | null {
   // x = m 2^e with m in [1/2, 2], and e = 0 whenever x itself is in that range.
   const top = bitLength(x.mid) + x.exp;
   const exponent = top === 0 || top === 1 || top === 2 ? (top === 2 && !(x.exp <= 0 && x.mid <= 2n << BigInt(-x.exp)) ? 2 : 0) : top;
-  const difference = exponent === 0 ? subtract(x, ONE, 64) : null;
+  const difference = exponent === 0 ? subtractExact(x, ONE) : null;
   const closeness = difference === null ? 0 : exponentOf(difference);
   if (closeness === -Infinity) return ZERO;
   if (difference !== null && closeness < -precision) {
     // |log(1+d) - d| <= d^2 for |d| <= 1/2.
-    const d = subtract(x, ONE, precision);
-    return withRadius(d, absoluteUpper(multiply(d, d, RADIUS_PRECISION)));
+    return withRadius(round(difference, precision), absoluteUpper(multiply(difference, difference, RADIUS_PRECISION)));
   }
   const bits = precision + 8 + Math.max(0, -closeness);
   const fixed = shiftFloor(x.mid, x.exp - exponent + bits);
@@ -99,7 +99,7 @@ function logExact(x: Ball, precision: number): Ball | null {
 export function log(x: Ball, precision: number): Ball | null {
   if (!isPositive(x)) return null;
   if (isExact(x)) return logExact(x, precision);
-  if (x.rad << 6n > x.mid) return increasing(logExact, x, Math.min(precision, 64));
+  if (x.rad << 6n > x.mid) return increasing(logExact, x, precision);
   const value = logExact(midpoint(x), precision);
   const slope = reciprocal(lowerEnd(x), RADIUS_PRECISION);
   return value === null || slope === null ? null : byDerivative(value, x, absoluteUpper(slope));
@@ -144,7 +144,7 @@ export function root(x: Ball, n: number, precision: number): Ball | null {
     const low = negate(rootExact(negate(lowerEnd(x)), n, Math.min(precision, 64)));
     return fromEnds(low, rootExact(upperEnd(x), n, Math.min(precision, 64)), precision);
   }
-  if (x.rad << 6n > x.mid) return increasing((e, p) => rootExact(e, n, p), x, Math.min(precision, 64));
+  if (x.rad << 6n > x.mid) return increasing((e, p) => rootExact(e, n, p), x, precision);
   const value = rootExact(midpoint(x), n, precision);
   // |f'| = f/(n x) at the lower end is largest there; f(lower) <= f(mid).
   const slope = divide(absoluteUpper(value), multiply(fromInteger(n), lowerEnd(x), RADIUS_PRECISION), RADIUS_PRECISION);
@@ -260,7 +260,7 @@ export function tan(x: Ball, precision: number): Ball | null {
   // tan is increasing between its poles; cos decides whether there is one inside.
   const cosine = cos(x, 64);
   if (containsZero(cosine)) return null;
-  if (exponentOf(radius(x)) > -8) return increasing(quotientAt, x, Math.min(precision, 64));
+  if (exponentOf(radius(x)) > -8) return increasing(quotientAt, x, precision);
   const value = quotientAt(midpoint(x), precision);
   const least = multiply(cosine, cosine, RADIUS_PRECISION);
   const slope = reciprocal(least, RADIUS_PRECISION);
@@ -289,7 +289,7 @@ function coshExact(x: Ball, precision: number): Ball | null {
 /** Null only where the result would be beyond 2^(2^30). */
 export function sinh(x: Ball, precision: number): Ball | null {
   if (isExact(x)) return sinhExact(x, precision);
-  if (exponentOf(radius(x)) > -8) return increasing(sinhExact, x, Math.min(precision, 64));
+  if (exponentOf(radius(x)) > -8) return increasing(sinhExact, x, precision);
   const value = sinhExact(midpoint(x), precision);
   const slope = coshExact(absoluteUpper(x), RADIUS_PRECISION);
   return value === null || slope === null ? null : byDerivative(value, x, absoluteUpper(slope));
@@ -297,7 +297,7 @@ export function sinh(x: Ball, precision: number): Ball | null {
 
 export function cosh(x: Ball, precision: number): Ball | null {
   if (isExact(x)) return coshExact(x, precision);
-  if (exponentOf(radius(x)) > -8) return increasing(coshExact, absolute(x), Math.min(precision, 64));
+  if (exponentOf(radius(x)) > -8) return increasing(coshExact, absolute(x), precision);
   const value = coshExact(midpoint(x), precision);
   const slope = sinhExact(absoluteUpper(x), RADIUS_PRECISION);
   return value === null || slope === null ? null : byDerivative(value, x, absoluteUpper(slope));
@@ -320,7 +320,7 @@ function tanhExact(x: Ball, precision: number): Ball {
 
 export function tanh(x: Ball, precision: number): Ball {
   if (isExact(x)) return tanhExact(x, precision);
-  if (exponentOf(radius(x)) > -8) return increasing(tanhExact, x, Math.min(precision, 64)) ?? UNIT;
+  if (exponentOf(radius(x)) > -8) return increasing(tanhExact, x, precision) ?? UNIT;
   // tanh' = 1 - tanh^2 <= 1; with the square at the end nearer to zero it stays near the truth for large arguments.
   const value = tanhExact(midpoint(x), precision);
   const nearest = tanhExact(x.mid >= 0n ? lowerEnd(x) : upperEnd(x), RADIUS_PRECISION);
@@ -336,13 +336,13 @@ function atanExact(x: Ball, precision: number): Ball {
     return withRadius(round(x, precision), multiply(squared, absoluteUpper(x), RADIUS_PRECISION));
   }
   if (size > 0) {
-    // atan x = sign(x) pi/2 - atan(1/x) for |x| > 1; at |x| <= 1 the direct way.
-    const one = shiftFloor(magnitude(x.mid), x.exp);
-    if (one >= 1n) {
-      const half = scaleByPowerOfTwo(pi(precision + 8), -1);
-      const inverse = reciprocal(x, precision + 8);
-      const rest = inverse === null ? ZERO : atan(inverse, precision + 8);
-      return subtract(x.mid > 0n ? half : negate(half), rest, precision);
+    // atan x = sign(x) pi/2 - atan(1/x) for |x| > 1; the reciprocal is off by less than one ulp.
+    const bits = precision + 8;
+    const shift = bits - x.exp;
+    if (shift < bits || magnitude(x.mid) > 1n << BigInt(-x.exp)) {
+      const inverse = shift <= 0 ? 0n : (1n << BigInt(shift)) / x.mid;
+      const half = piFixed(bits) >> 1n;
+      return rounded((x.mid > 0n ? half : -half) - inverseTangent(inverse, bits), 10n, -bits, precision);
     }
   }
   const bits = precision + 8 + Math.max(0, -size);
@@ -351,7 +351,7 @@ function atanExact(x: Ball, precision: number): Ball {
 
 export function atan(x: Ball, precision: number): Ball {
   if (isExact(x)) return atanExact(x, precision);
-  if (exponentOf(radius(x)) > -8) return increasing(atanExact, x, Math.min(precision, 64)) ?? ZERO;
+  if (exponentOf(radius(x)) > -8) return increasing(atanExact, x, precision) ?? ZERO;
   const value = atanExact(midpoint(x), precision);
   const least = absoluteLowerSquarePlusOne(x);
   const slope = reciprocal(least, RADIUS_PRECISION) ?? ONE;
@@ -366,7 +366,8 @@ function absoluteLowerSquarePlusOne(x: Ball): Ball {
 /** The angle of the point (x, y), in [-pi, pi]; null at the origin and where the ball meets the negative x-axis. */
 export function atan2(y: Ball, x: Ball, precision: number): Ball | null {
   const p = precision + 8;
-  if (isPositive(x)) {
+  const steep = exponentOf(y) > exponentOf(x) && !containsZero(y);
+  if (isPositive(x) && !steep) {
     const quotient = divide(y, x, p);
     return quotient === null ? null : atan(quotient, precision);
   }
@@ -396,8 +397,8 @@ export function asin(x: Ball, precision: number): Ball | null {
 
 /** A lower bound of 1 - y^2 over the ball, as an exact ball (zero where none is positive). */
 function oneMinusSquareLower(x: Ball): Ball {
-  const top = absoluteUpper(x);
-  const gap = lowerEnd(multiply(subtract(ONE, top, 64), add(ONE, top, 64), 64));
+  const top = x.mid < 0n ? negate(lowerEnd(x)) : upperEnd(x);
+  const gap = lowerEnd(multiply(subtract(ONE, top, bitLength(top.mid) + Math.max(0, -top.exp) + 64), add(ONE, top, 64), 64));
   return gap.mid > 0n ? gap : ZERO;
 }
 
@@ -453,7 +454,7 @@ function asinhExact(x: Ball, precision: number): Ball | null {
 
 export function asinh(x: Ball, precision: number): Ball | null {
   if (isExact(x)) return asinhExact(x, precision);
-  if (exponentOf(radius(x)) > -8) return increasing(asinhExact, x, Math.min(precision, 64));
+  if (exponentOf(radius(x)) > -8) return increasing(asinhExact, x, precision);
   const value = asinhExact(midpoint(x), precision);
   const least = sqrt(absoluteLowerSquarePlusOne(x), RADIUS_PRECISION);
   const slope = least === null ? null : reciprocal(least, RADIUS_PRECISION);
@@ -502,7 +503,7 @@ export function atanh(x: Ball, precision: number): Ball | null {
   if (isExact(x)) return exact(x, precision);
   const gap = oneMinusSquareLower(x);
   if (gap.mid === 0n) return null;
-  if (exponentOf(radius(x)) > -8 || exponentOf(gap) < exponentOf(radius(x)) + 6) return increasing(exact, x, Math.min(precision, 64));
+  if (exponentOf(radius(x)) > -8 || exponentOf(gap) < exponentOf(radius(x)) + 6) return increasing(exact, x, precision);
   const value = exact(midpoint(x), precision);
   const slope = reciprocal(gap, RADIUS_PRECISION);
   return value === null || slope === null ? null : byDerivative(value, x, absoluteUpper(slope));

@@ -90,11 +90,11 @@ export function withRadius(x: Ball, extra: Ball): Ball {
   // Bring both to an exponent at which the extra radius has at most 32 bits, or the exponent of x if that is larger and the radius still shows.
   const top = extra.exp + bitLength(mid);
   const exp = Math.min(x.exp, top - RADIUS_BITS);
-  const floorExp = Math.max(exp, x.exp + bitLength(x.mid === 0n ? x.rad : x.mid) - 100_000);
+  const floorExp = Math.max(exp, x.exp + bitLength(x.mid === 0n ? x.rad : x.mid) - 4096);
   const add = shiftCeil(mid, extra.exp - floorExp);
   const shifted = shiftFloor(x.mid, x.exp - floorExp);
   const own = shiftCeil(x.rad, x.exp - floorExp) + (x.exp < floorExp ? 1n : 0n);
-  return rounded(shifted, own + add, floorExp, Math.max(64, bitLength(x.mid) + 64));
+  return rounded(shifted, own + add, floorExp, bitLength(shifted) + 1);
 }
 
 /** An exact ball at the lower end. */
@@ -181,14 +181,15 @@ export function absolute(x: Ball): Ball {
 
 export const scaleByPowerOfTwo = (x: Ball, n: number): Ball => (x.mid === 0n && x.rad === 0n ? x : { mid: x.mid, rad: x.rad, exp: x.exp + n });
 
-function addExact(a: Ball, b: Ball): Ball {
+/** The sum of two exact balls, exactly; their exponents must not be far apart. */
+export function addExact(a: Ball, b: Ball): Ball {
   if (a.mid === 0n) return b;
   if (b.mid === 0n) return a;
   const exp = Math.min(a.exp, b.exp);
   if (Math.max(a.exp, b.exp) - exp > EXPANSION_LIMIT) throw new Declined('undecided', 'The ends of an enclosure differ by more than 2^1000000; choose a smaller interval.');
   return { mid: (a.mid << BigInt(a.exp - exp)) + (b.mid << BigInt(b.exp - exp)), rad: 0n, exp };
 }
-const subtractExact = (a: Ball, b: Ball): Ball => addExact(a, negate(b));
+export const subtractExact = (a: Ball, b: Ball): Ball => addExact(a, negate(b));
 
 export function add(a: Ball, b: Ball, precision: number): Ball {
   if (a.exp === b.exp) return rounded(a.mid + b.mid, a.rad + b.rad, a.exp, precision);

@@ -8,8 +8,12 @@ import type { Ball, ComplexBall } from '../rigorous/index.ts';
 
 /** How the function is written. The first name of a list is the one used for writing, all are read. */
 export interface FunctionNames {
-  /** LaTeX commands or operator names with their backslash where they have one: `\sin`, `\operatorname{artanh}`, `\Gamma`. */
+  /** LaTeX commands or operator names with their backslash where they have one: `\sin`, `\operatorname{artanh}`, `\Gamma`. Spelled without needless braces or spaces; `\mathrm{erf}` and `\text{erf}` are looked up as `\operatorname{erf}`. */
   readonly latex: readonly string[];
+  /** Single letters of the trade (`J`, `K`, `W`, `E`) which are this function only where index and bracket have the shape given by `latexIndices` and the arity; elsewhere they are symbols. */
+  readonly latexLetters?: readonly string[];
+  /** How many leading arguments stand as an index of the name in LaTeX, and where: `J_{\nu}(x)` has one subscript, `\psi^{(n)}(x)` one superscript in parentheses. Absent: none. */
+  readonly latexIndices?: { readonly count: number; readonly place: 'subscript' | 'superscript' };
   /** Writing that is not name(args): `\Gamma(x)` is default; `J_{\nu}(x)` needs a template. Arguments are LaTeX already. */
   readonly latexForm?: (args: readonly string[]) => string;
   /** Plain words in comments and plain text (`arctan`, `ln`), beside the id itself. */
@@ -20,6 +24,8 @@ export interface FunctionNames {
   readonly mpmath: (args: readonly string[]) => string;
   /** Bare library names per language id family (`c`, `cpp`, `python`, `javascript`, `rust`, `java`, `csharp`, `go`, `julia`, `fortran`, `matlab`, `r`, `glsl`, `hlsl`, `kotlin`, `swift`), without prefix (`std::`, `np.`, `Math.`) and without float suffix. Absent: the language has no such library call. */
   readonly code: Readonly<Record<string, readonly string[]>>;
+  /** Library names whose arguments differ from the description's (order, added indices), keyed `family:name`. `read` gives null where the call does not fit. */
+  readonly codeArguments?: Readonly<Record<string, { readonly read: (args: readonly Expression[]) => readonly Expression[] | null; readonly write: (args: readonly Expression[]) => readonly Expression[] | null }>>;
 }
 
 /** Where the varying argument goes. `offset` is the symbol of a small quantity u with argument = center + u. */

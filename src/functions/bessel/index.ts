@@ -1,0 +1,34 @@
+/** Bessel functions, Airy, Struve, Kelvin. */
+import { build, type Expression } from '../../expression/index.ts';
+import type { FunctionDescription } from '../description.ts';
+import { besselNames as n } from './names.ts';
+
+const { call, constant, difference, number, product, quotient, squareRoot, sum } = build;
+const half = quotient(number(1), number(2));
+const spherical =
+  (id: string) =>
+  ([order = number(0), x = number(0)]: readonly Expression[]): Expression =>
+    product(squareRoot(quotient(constant('pi'), product(number(2), x))), call(id, sum(order, half), x));
+
+export const besselFunctions: readonly FunctionDescription[] = [
+  { id: 'besselJ', title: 'Bessel function of the first kind', arity: 2, names: n.besselJ, source: 'DLMF 10.2.2' },
+  { id: 'besselY', title: 'Bessel function of the second kind', arity: 2, names: n.besselY, domain: 'x > 0', source: 'DLMF 10.2.3' },
+  { id: 'besselI', title: 'modified Bessel function of the first kind', arity: 2, names: n.besselI, source: 'DLMF 10.25.2' },
+  { id: 'besselK', title: 'modified Bessel function of the second kind', arity: 2, names: n.besselK, domain: 'x > 0', source: 'DLMF 10.27.4' },
+  { id: 'hankel1', title: 'Hankel function of the first kind', arity: 2, names: n.hankel1, definition: ([v = number(0), x = number(0)]) => sum(call('besselJ', v, x), product(constant('i'), call('besselY', v, x))), domain: 'x > 0', source: 'DLMF 10.4.3' },
+  { id: 'hankel2', title: 'Hankel function of the second kind', arity: 2, names: n.hankel2, definition: ([v = number(0), x = number(0)]) => difference(call('besselJ', v, x), product(constant('i'), call('besselY', v, x))), domain: 'x > 0', source: 'DLMF 10.4.3' },
+  { id: 'sphericalJ', title: 'spherical Bessel function of the first kind', arity: 2, names: n.sphericalJ, definition: spherical('besselJ'), source: 'DLMF 10.47.3' },
+  { id: 'sphericalY', title: 'spherical Bessel function of the second kind', arity: 2, names: n.sphericalY, definition: spherical('besselY'), domain: 'x > 0', source: 'DLMF 10.47.4' },
+  { id: 'sphericalI', title: 'modified spherical Bessel function of the first kind', arity: 2, names: n.sphericalI, definition: spherical('besselI'), source: 'DLMF 10.47.7' },
+  { id: 'sphericalK', title: 'modified spherical Bessel function of the second kind', arity: 2, names: n.sphericalK, definition: spherical('besselK'), domain: 'x > 0', source: 'DLMF 10.47.9' },
+  { id: 'airyAi', title: 'Airy function Ai', arity: 1, names: n.airyAi, derivative: ([x = number(0)]) => call('airyAiPrime', x), source: 'DLMF 9.2' },
+  { id: 'airyBi', title: 'Airy function Bi', arity: 1, names: n.airyBi, derivative: ([x = number(0)]) => call('airyBiPrime', x), source: 'DLMF 9.2' },
+  { id: 'airyAiPrime', title: "derivative of the Airy function Ai", arity: 1, names: n.airyAiPrime, derivative: ([x = number(0)]) => product(x, call('airyAi', x)), source: 'DLMF 9.2.1' },
+  { id: 'airyBiPrime', title: "derivative of the Airy function Bi", arity: 1, names: n.airyBiPrime, derivative: ([x = number(0)]) => product(x, call('airyBi', x)), source: 'DLMF 9.2.1' },
+  { id: 'struveH', title: 'Struve function H', arity: 2, names: n.struveH, source: 'DLMF 11.2.1' },
+  { id: 'struveL', title: 'modified Struve function L', arity: 2, names: n.struveL, source: 'DLMF 11.2.2' },
+  { id: 'kelvinBer', title: 'Kelvin function ber', arity: 2, names: n.kelvinBer, source: 'DLMF 10.61.1' },
+  { id: 'kelvinBei', title: 'Kelvin function bei', arity: 2, names: n.kelvinBei, source: 'DLMF 10.61.1' },
+  { id: 'kelvinKer', title: 'Kelvin function ker', arity: 2, names: n.kelvinKer, domain: 'x > 0', source: 'DLMF 10.61.2' },
+  { id: 'kelvinKei', title: 'Kelvin function kei', arity: 2, names: n.kelvinKei, domain: 'x > 0', source: 'DLMF 10.61.2' },
+];

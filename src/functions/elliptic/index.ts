@@ -1,0 +1,29 @@
+/** Elliptic integrals and functions, and the arithmetic-geometric mean. In LaTeX the modulus k, in library calls the parameter m = k^2. */
+import { build, type Expression } from '../../expression/index.ts';
+import type { FunctionDescription } from '../description.ts';
+import { names } from '../naming.ts';
+
+const { call, number, power } = build;
+const sq = (e: Expression): Expression => power(e, 2);
+const swapLast = { read: (a: readonly Expression[]): readonly Expression[] | null => (a.length === 2 ? [...a].reverse() : null), write: (a: readonly Expression[]): readonly Expression[] | null => [...a].reverse() };
+
+export const ellipticFunctions: readonly FunctionDescription[] = [
+  { id: 'ellipticK', title: 'complete elliptic integral of the first kind (modulus k)', arity: 1, parity: 'even', names: names({ latex: ['\\operatorname{K}'], latexLetters: ['K'], latexForm: ([k = '']) => `K(${k})`, unicodeForm: ([k = '']) => `K(${k})`, mpmath: ([k = '']) => `ellipk((${k})**2)`, code: { cpp: ['comp_ellint_1'] } }), definition: ([k = number(0)]) => call('ellipticKParameter', sq(k)), domain: '-1 < k < 1', source: 'DLMF 19.2.8' },
+  { id: 'ellipticE', title: 'complete elliptic integral of the second kind (modulus k)', arity: 1, parity: 'even', names: names({ latex: ['\\operatorname{E}'], latexLetters: ['E'], latexForm: ([k = '']) => `E(${k})`, unicodeForm: ([k = '']) => `E(${k})`, mpmath: ([k = '']) => `ellipe((${k})**2)`, code: { cpp: ['comp_ellint_2'] } }), definition: ([k = number(0)]) => call('ellipticEParameter', sq(k)), domain: '-1 <= k <= 1', source: 'DLMF 19.2.8' },
+  { id: 'ellipticF', title: 'elliptic integral of the first kind (amplitude, modulus k)', arity: 2, names: names({ latex: ['\\operatorname{F}'], latexLetters: ['F'], latexForm: (a) => `F(${a.join(', ')})`, unicodeForm: (a) => `F(${a.join(', ')})`, mpmath: ([p = '', k = '']) => `ellipf(${p},(${k})**2)`, code: { cpp: 'ellint_1' }, codeArguments: { 'cpp:ellint_1': swapLast } }), definition: ([p = number(0), k = number(0)]) => call('ellipticFParameter', p, sq(k)), source: 'DLMF 19.2.4' },
+  { id: 'ellipticEIncomplete', title: 'elliptic integral of the second kind (amplitude, modulus k)', arity: 2, names: names({ latex: ['\\operatorname{E}'], latexLetters: ['E'], latexForm: (a) => `E(${a.join(', ')})`, unicodeForm: (a) => `E(${a.join(', ')})`, mpmath: ([p = '', k = '']) => `ellipe(${p},(${k})**2)`, code: { cpp: 'ellint_2' }, codeArguments: { 'cpp:ellint_2': swapLast } }), definition: ([p = number(0), k = number(0)]) => call('ellipticEIncompleteParameter', p, sq(k)), source: 'DLMF 19.2.5' },
+  { id: 'ellipticPi', title: 'complete elliptic integral of the third kind (characteristic alpha^2, modulus k)', arity: 2, names: names({ latex: ['\\Pi'], latexForm: (a) => `\\Pi(${a.join(', ')})`, unicodeForm: (a) => `Π(${a.join(', ')})`, mpmath: ([n = '', k = '']) => `ellippi(${n},(${k})**2)`, code: { cpp: 'comp_ellint_3' }, codeArguments: { 'cpp:comp_ellint_3': swapLast } }), definition: ([n = number(0), k = number(0)]) => call('ellipticPiParameter', n, sq(k)), source: 'DLMF 19.2.8' },
+  { id: 'ellipticKParameter', title: 'complete elliptic integral of the first kind (parameter m)', arity: 1, names: names({ latex: [], latexForm: ([m = '']) => `K(\\sqrt{${m}})`, unicodeForm: ([m = '']) => `K(√(${m}))`, mpmath: 'ellipk', plain: ['ellipk'], code: { python: 'ellipk', julia: 'ellipk', matlab: ['ellipticK', 'ellipke'] } }), domain: 'm < 1', source: 'DLMF 19.2.8' },
+  { id: 'ellipticEParameter', title: 'complete elliptic integral of the second kind (parameter m)', arity: 1, names: names({ latex: [], latexForm: ([m = '']) => `E(\\sqrt{${m}})`, unicodeForm: ([m = '']) => `E(√(${m}))`, mpmath: 'ellipe', plain: ['ellipe'], code: { python: 'ellipe', julia: 'ellipe', matlab: 'ellipticE' } }), domain: 'm <= 1', source: 'DLMF 19.2.8' },
+  { id: 'ellipticFParameter', title: 'elliptic integral of the first kind (amplitude, parameter m)', arity: 2, names: names({ latex: [], latexForm: ([p = '', m = '']) => `F(${p}, \\sqrt{${m}})`, mpmath: 'ellipf', code: { python: ['ellipkinc', 'ellipf'], matlab: 'ellipticF' } }), source: 'DLMF 19.2.4' },
+  { id: 'ellipticEIncompleteParameter', title: 'elliptic integral of the second kind (amplitude, parameter m)', arity: 2, names: names({ latex: [], latexForm: ([p = '', m = '']) => `E(${p}, \\sqrt{${m}})`, mpmath: 'ellipe', code: { python: ['ellipeinc', 'ellipe'], matlab: 'ellipticE' } }), source: 'DLMF 19.2.5' },
+  { id: 'ellipticPiParameter', title: 'complete elliptic integral of the third kind (characteristic n, parameter m)', arity: 2, names: names({ latex: [], latexForm: ([n = '', m = '']) => `\\Pi(${n}, \\sqrt{${m}})`, mpmath: 'ellippi', code: { python: 'ellippi', matlab: 'ellipticPi' } }), source: 'DLMF 19.2.8' },
+  ...(['sn', 'cn', 'dn'] as const).map((id): FunctionDescription => ({
+    id: `jacobi${id.charAt(0).toUpperCase()}${id.charAt(1)}`,
+    title: `Jacobian elliptic function ${id} (argument, modulus k)`,
+    arity: 2,
+    names: names({ latex: [`\\operatorname{${id}}`, `\\${id}`], latexForm: (a) => `\\operatorname{${id}}(${a.join(', ')})`, unicodeForm: (a) => `${id}(${a.join(', ')})`, plain: [id], mpmath: ([u = '', k = '']) => `ellipfun("${id}",${u},(${k})**2)` }),
+    source: 'DLMF 22.2',
+  })),
+  { id: 'agm', title: 'arithmetic-geometric mean', arity: [1, 2], names: names({ latex: ['\\operatorname{agm}', '\\operatorname{M}', '\\operatorname{AGM}'], latexLetters: ['M'], latexForm: (a) => `\\operatorname{agm}(${a.join(', ')})`, mpmath: 'agm', code: { python: 'agm' } }), domain: 'positive arguments', source: 'DLMF 19.8.1' },
+];

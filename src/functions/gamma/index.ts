@@ -1,0 +1,51 @@
+/** The gamma family. */
+import { build, type Expression, Q } from '../../expression/index.ts';
+import type { FunctionDescription } from '../description.ts';
+import { gammaNames } from './names.ts';
+
+const { call, difference, negation, number, power, product, quotient, sum } = build;
+const gamma = (e: Expression): Expression => call('gamma', e);
+const plusOne = (e: Expression): Expression => sum(e, number(1));
+
+export const gammaFunctions: readonly FunctionDescription[] = [
+  { id: 'gamma', title: 'Gamma function', arity: 1, names: gammaNames.gamma, derivative: ([x = number(0)]) => product(gamma(x), call('digamma', x)), domain: 'x is not 0, -1, -2, ...', source: 'DLMF 5.2.1' },
+  { id: 'logGamma', title: 'logarithm of the Gamma function', arity: 1, names: gammaNames.logGamma, derivative: ([x = number(0)]) => call('digamma', x), domain: 'x > 0', source: 'DLMF 5.2' },
+  { id: 'digamma', title: 'digamma function', arity: 1, names: gammaNames.digamma, derivative: ([x = number(0)]) => call('polygamma', number(1), x), domain: 'x is not 0, -1, -2, ...', source: 'DLMF 5.2.2' },
+  {
+    id: 'polygamma',
+    title: 'polygamma function',
+    arity: 2,
+    names: gammaNames.polygamma,
+    derivative: ([n = number(0), x = number(0)], index) => (index === 1 ? call('polygamma', n.kind === 'number' ? number(Q.add(n.value, Q.ONE)) : plusOne(n), x) : null),
+    domain: 'x is not 0, -1, -2, ...',
+    source: 'DLMF 5.15.1',
+  },
+  { id: 'factorial', title: 'factorial', arity: 1, names: gammaNames.factorial, definition: ([n = number(0)]) => gamma(plusOne(n)) },
+  {
+    id: 'doubleFactorial',
+    title: 'double factorial',
+    arity: 1,
+    names: gammaNames.doubleFactorial,
+    definition: ([n = number(0)]) =>
+      product(
+        power(number(2), quotient(n, number(2))),
+        power(quotient(build.constant('pi'), number(2)), quotient(difference(call('cos', product(build.constant('pi'), n)), number(1)), number(4))),
+        gamma(plusOne(quotient(n, number(2)))),
+      ),
+    source: 'DLMF 5.4.2, interpolated as in common practice: equal at every non-negative integer',
+  },
+  { id: 'binomial', title: 'binomial coefficient', arity: 2, names: gammaNames.binomial, definition: ([n = number(0), k = number(0)]) => quotient(gamma(plusOne(n)), product(gamma(plusOne(k)), gamma(plusOne(difference(n, k))))), source: 'DLMF 1.2.6' },
+  { id: 'pochhammer', title: 'rising factorial (Pochhammer symbol)', arity: 2, names: gammaNames.pochhammer, definition: ([a = number(0), n = number(0)]) => quotient(gamma(sum(a, n)), gamma(a)), source: 'DLMF 5.2.5' },
+  { id: 'fallingFactorial', title: 'falling factorial', arity: 2, names: gammaNames.fallingFactorial, definition: ([a = number(0), n = number(0)]) => quotient(gamma(plusOne(a)), gamma(plusOne(difference(a, n)))) },
+  { id: 'beta', title: 'beta function', arity: 2, names: gammaNames.beta, definition: ([a = number(0), b = number(0)]) => quotient(product(gamma(a), gamma(b)), gamma(sum(a, b))), source: 'DLMF 5.12.1' },
+  { id: 'logBeta', title: 'logarithm of the beta function', arity: 2, names: gammaNames.logBeta, definition: ([a = number(0), b = number(0)]) => sum(call('logGamma', a), call('logGamma', b), negation(call('logGamma', sum(a, b)))) },
+  { id: 'harmonic', title: 'harmonic number', arity: 1, names: gammaNames.harmonic, definition: ([n = number(0)]) => sum(call('digamma', plusOne(n)), build.constant('eulerGamma')), source: 'DLMF 5.4.14' },
+  { id: 'upperGamma', title: 'upper incomplete gamma function', arity: 2, names: gammaNames.upperGamma, source: 'DLMF 8.2.2' },
+  { id: 'lowerGamma', title: 'lower incomplete gamma function', arity: 2, names: gammaNames.lowerGamma, source: 'DLMF 8.2.1' },
+  { id: 'regularizedUpperGamma', title: 'regularised upper incomplete gamma function', arity: 2, names: gammaNames.regularizedUpperGamma, definition: ([a = number(0), x = number(0)]) => quotient(call('upperGamma', a, x), gamma(a)), source: 'DLMF 8.2.4' },
+  { id: 'regularizedLowerGamma', title: 'regularised lower incomplete gamma function', arity: 2, names: gammaNames.regularizedLowerGamma, definition: ([a = number(0), x = number(0)]) => quotient(call('lowerGamma', a, x), gamma(a)), source: 'DLMF 8.2.4' },
+  { id: 'barnesG', title: 'Barnes G-function', arity: 1, names: gammaNames.barnesG, source: 'DLMF 5.17' },
+  { id: 'logBarnesG', title: 'logarithm of the Barnes G-function', arity: 1, names: gammaNames.logBarnesG, source: 'DLMF 5.17' },
+  { id: 'hyperfactorial', title: 'hyperfactorial', arity: 1, names: gammaNames.hyperfactorial, source: 'DLMF 5.17' },
+  { id: 'superfactorial', title: 'superfactorial', arity: 1, names: gammaNames.superfactorial, definition: ([n = number(0)]) => call('barnesG', sum(n, number(2))) },
+];

@@ -200,7 +200,7 @@ export function add(a: Ball, b: Ball, precision: number): Ball {
   const topHigh = high.exp + Math.max(bitLength(high.mid), bitLength(high.rad));
   const topLow = low.exp + Math.max(bitLength(low.mid), bitLength(low.rad));
   const floorExp = Math.max(topHigh, topLow) - precision - 64;
-  if (low.exp >= floorExp || difference <= precision) {
+  if (low.exp >= floorExp || difference <= precision + 4096) {
     const n = BigInt(difference);
     return rounded((high.mid << n) + low.mid, (high.rad << n) + low.rad, low.exp, precision);
   }

@@ -1,2 +1,9 @@
 export type { Ball, ComplexBall, Interval } from './ball.types.ts';
+export type { Arithmetic, Elementary, ElementaryName, RealArithmetic } from './arithmetic.ts';
+export { ELEMENTARY } from './arithmetic.ts';
+/** Real balls. */
 export * as real from './real.ts';
+/** Complex balls. */
+export * as complex from './complex.ts';
+export { ballArithmetic } from './ball-arithmetic.ts';
+export { type ComplexArithmetic, complexArithmetic, type Rectangle } from './complex-arithmetic.ts';

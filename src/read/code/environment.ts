@@ -1,0 +1,34 @@
+/** What surrounds an expression while it is read: language, declared types, imports, local names, and remarks to hand back. */
+import type { Span } from '../../expression/index.ts';
+import type { CodeLanguage } from './languages/language.ts';
+import type { ValueType } from './types.ts';
+
+/** Something the reader did that a careful user wants to know. */
+export interface Remark {
+  readonly span: Span;
+  readonly message: string;
+}
+
+export interface Imports {
+  /** Local alias -> module path (`np` -> `numpy`). */
+  readonly modules: ReadonlyMap<string, string>;
+  /** Local name -> the module it came from and its name there. */
+  readonly names: ReadonlyMap<string, { readonly module: string; readonly original: string }>;
+  /** Modules whose names all came in. */
+  readonly open: readonly string[];
+}
+
+export interface Environment {
+  readonly language: CodeLanguage;
+  readonly text: string;
+  readonly imports: Imports;
+  readonly typeOf: (name: string) => ValueType;
+  /** The document declares this name itself (variable, parameter or function). */
+  readonly isLocal: (name: string) => boolean;
+  readonly isLocalFunction: (name: string) => boolean;
+  readonly remark: (span: Span, message: string) => void;
+  /** Canonical spelling: in languages that fold case, the first one read. */
+  readonly spell: (name: string) => string;
+}
+
+export const NO_IMPORTS: Imports = { modules: new Map(), names: new Map(), open: [] };

@@ -1,0 +1,51 @@
+/** Rust. Library names: documentation of the primitive types f32 and f64; constants: std::f64::consts. */
+import * as K from './constants.ts';
+import { type CodeLanguage, SLASHES } from './language.ts';
+
+const CONSTANTS = {
+  PI: K.PI,
+  E: K.E,
+  TAU: K.TAU,
+  FRAC_1_PI: K.INVERSE_PI,
+  FRAC_2_PI: K.TWO_INVERSE_PI,
+  FRAC_1_SQRT_2: K.INVERSE_ROOT_TWO,
+  FRAC_2_SQRT_PI: K.TWO_INVERSE_ROOT_PI,
+  FRAC_1_SQRT_PI: K.INVERSE_ROOT_PI,
+  FRAC_1_SQRT_3: K.INVERSE_ROOT_THREE,
+  FRAC_PI_2: K.piOver(2),
+  FRAC_PI_3: K.piOver(3),
+  FRAC_PI_4: K.piOver(4),
+  FRAC_PI_6: K.piOver(6),
+  FRAC_PI_8: K.piOver(8),
+  LN_2: K.LOG_TWO,
+  LN_10: K.LOG_TEN,
+  LOG2_E: K.LOG2_E,
+  LOG10_E: K.LOG10_E,
+  LOG2_10: K.LOG2_TEN,
+  LOG10_2: K.LOG10_TWO,
+  SQRT_2: K.ROOT_TWO,
+  SQRT_3: K.ROOT_THREE,
+  EGAMMA: K.EULER_GAMMA,
+  PHI: K.GOLDEN_RATIO,
+};
+
+export const rust: CodeLanguage = {
+  family: 'rust',
+  grammar: 'tree-sitter-rust',
+  prefixes: ['f64', 'f32', 'std.f64', 'std.f32', 'core.f64', 'core.f32', 'std.f64.consts', 'std.f32.consts', 'core.f64.consts', 'core.f32.consts', 'f64.consts', 'f32.consts', 'consts', 'libm', 'Float', 'num_traits.Float', 'T', 'F'],
+  modules: ['std.f64.consts', 'std.f32.consts', 'core.f64.consts', 'core.f32.consts', 'libm'],
+  methods: true,
+  arithmetic: { powi: 'power', powf: 'power', pow: 'power', sqrt: 'squareRoot', cbrt: 'cubeRoot', recip: 'reciprocal', mul_add: 'multiplyAdd', fma: 'multiplyAdd', log: 'logBase', to_radians: 'radians', to_degrees: 'degrees', neg: 'negate', clone: 'identity', into: 'identity', from: 'identity', to_owned: 'identity' },
+  functions: { ln: 'log' },
+  constants: { ...CONSTANTS, INFINITY: K.INFINITY },
+  bareConstants: /^(?:PI|TAU|FRAC_\w+|LN_2|LN_10|SQRT_2)$/,
+  integerQuotient: 'truncated',
+  caret: 'exclusive or',
+  floatTypes: { f64: 'binary64', f32: 'binary32', f16: 'binary16', f128: 'binary128', bf16: 'bfloat16' },
+  integerTypes: ['i8', 'i16', 'i32', 'i64', 'i128', 'isize', 'u8', 'u16', 'u32', 'u64', 'u128', 'usize'],
+  suffixes: { f64: 'binary64', f32: 'binary32', f16: 'binary16', f128: 'binary128' },
+  literalFormat: 'binary64',
+  literalAdapts: true,
+  nameSuffixes: { f: 'binary32' },
+  comments: { ...SLASHES, nested: true },
+};

@@ -1,0 +1,216 @@
+/** A name in a formula: symbol, constant, unspecified function, or special function written with a letter. */
+import { build, type Expression } from '../../expression/index.ts';
+import { isName, nameText } from './facts.ts';
+import { functionId } from './functionNames.ts';
+import { applyKnown, bracketArguments } from './calls.ts';
+import { letterFunction } from './letterFunctions.ts';
+import { fail, isMark, next, node, peek, type State } from './state.ts';
+import { GREEK } from './unicode.ts';
+import type { Token } from './tokens.ts';
+
+/** Subscript text in canonical form: one character or command bare, more in braces, no spaces. */
+export function subscript(p: State): string {
+  const t = peek(p);
+  if (t.kind === 'sub') {
+    next(p);
+    return braced(t.text);
+  }
+  next(p);
+  const first = peek(p);
+  if (first.kind === 'end') fail(p, 'The subscript is missing; add it after the underscore.', t);
+  if (first.kind !== 'open') {
+    next(p);
+    if (first.kind === 'digit' && p.options.notation === 'plain') {
+      let digits = first.text;
+      while (peek(p).kind === 'digit' && !peek(p).spaced) digits += next(p).text;
+      return braced(digits);
+    }
+    return braced(written(first));
+  }
+  const close = p.match[p.at] ?? -1;
+  const parts: string[] = [];
+  for (p.at += 1; p.at < close; p.at += 1) {
+    const t0 = p.tokens[p.at] as Token;
+    const before = parts[parts.length - 1];
+    const value = written(t0);
+    parts.push(before !== undefined && /\\[A-Za-z]+$/.test(before) && /^[A-Za-z]/.test(value) ? ` ${value}` : value);
+  }
+  p.at = close + 1;
+  return braced(parts.join(''));
+}
+const written = (t: Token): string => (t.kind === 'command' ? `\\${t.text === 'varepsilon' ? 'epsilon' : t.text}` : t.kind === 'space' ? '' : t.text.replace(/^\\(?=[{}])/, ''));
+export const braced = (s: string): string => (s.length === 1 || /^\\[A-Za-z]+$/.test(s) ? s : `{${s}}`);
+
+/** A name with its decorations: subscripts, primes, what stands in the brackets behind it. */
+export function name(p: State): Expression {
+  const from = p.at;
+  const t = next(p);
+  let base = nameText(t);
+  if (t.kind === 'word') {
+    const plain = plainWord(p, from, t);
+    if (typeof plain !== 'string') return plain;
+    base = plain;
+  } else if (t.kind === 'letter') {
+    const run = functionRun(p, from);
+    if (run) return run;
+  }
+  if (isOrder(p, base, t)) return order(p, from, base === 'o');
+  let index = '';
+  let primes = 0;
+  for (;;) {
+    const mark = peek(p);
+    if (mark.kind === 'sub' || isMark(mark, '_')) {
+      if (index !== '') fail(p, 'Two subscripts stand side by side; put braces around the inner name.');
+      index = subscript(p);
+    } else if (isMark(mark, "'")) {
+      next(p);
+      primes += 1;
+    } else if (isMark(mark, '^') && (isPrimeExponent(p) || (derivativeExponent(p) !== null && looksLikeFunction(p, base, index, primes)))) {
+      const count = derivativeExponent(p);
+      if (count === null) {
+        const close = p.match[p.at + 1] ?? -1;
+        primes += p.tokens.slice(p.at, close > 0 ? close : p.at + 2).filter((x) => x.text === 'prime' || x.text === "'").length;
+        p.at = close > 0 ? close + 1 : p.at + 2;
+      } else {
+        primes += count;
+        p.at = (p.match[p.at + 1] ?? p.at) + 1;
+      }
+    } else break;
+  }
+  const full = index === '' ? base : `${base}_${index}`;
+  const constant = index === '' && primes === 0 && !p.options.symbols.has(full) ? constantOf(p, t, base) : null;
+  if (constant) return node(p, from, constant);
+  if (index !== '' && primes === 0 && /^\\gamma_(?:E|\{EM\}|\{\\mathrm\{E\}\})$/.test(full) && !p.options.symbols.has(full)) return node(p, from, build.constant('eulerGamma'));
+  const special = p.options.symbols.has(full) || p.options.functions.has(full) ? null : letterFunction(p, from, base, index, primes);
+  if (special) return special;
+  const bracket = peek(p);
+  if (isMark(bracket, '(', '[') && applies(p, base, index, primes)) {
+    const args = bracketArguments(p);
+    return node(p, from, { kind: 'apply', name: full, args, derivatives: args.map((_, i) => (i === 0 ? primes : 0)) });
+  }
+  return node(p, from, { kind: 'symbol', name: primes === 0 ? full : `${base}${"'".repeat(primes)}${index === '' ? '' : `_${index}`}` });
+}
+
+/** `^{(4)}` behind a function's name; the number of differentiations, or null. */
+function derivativeExponent(p: State): number | null {
+  const open = p.at + 1;
+  if (p.tokens[open]?.kind !== 'open' || !isMark(p.tokens[open + 1] as Token, '(')) return null;
+  const close = p.match[open + 1] ?? -1;
+  if (close < 0 || p.match[open] !== close + 1) return null;
+  const inner = p.tokens.slice(open + 2, close);
+  return inner.length > 0 && inner.length < 4 && inner.every((t) => t.kind === 'digit') ? Number(inner.map((t) => t.text).join('')) : null;
+}
+const isPrimeExponent = (p: State): boolean => {
+  const first = p.tokens[p.at + 1];
+  return first?.text === 'prime' || (first?.kind === 'open' && p.tokens[p.at + 2]?.text === 'prime');
+};
+
+/** Whether `^{(n)}` behind this name counts derivatives: it does for everything that is a function here. */
+function looksLikeFunction(p: State, base: string, index: string, primes: number): boolean {
+  const full = index === '' ? base : `${base}_${index}`;
+  return primes > 0 || p.facts.surelyFunctions.has(full) || p.options.functions.has(full) || /^(?:[fghuyFGHUY]|\\psi|\\phi|\\varphi)$/.test(base);
+}
+
+/**
+ * Whether the bracket behind a name holds arguments. A name with a prime or a comma in its brackets is a function;
+ * f, g, h, u, y and their like are functions unless they also stand alone or multiply themselves; any other name is a
+ * function only if its brackets hold a single symbol or number (`x(\epsilon)`, `T(\theta_0)`, `L(0)`), so that `n(n-1)` and `a(1+x)` stay products.
+ */
+function applies(p: State, base: string, index: string, primes: number): boolean {
+  const full = index === '' ? base : `${base}_${index}`;
+  if (p.options.symbols.has(full)) return false;
+  if (primes > 0 || p.options.functions.has(full) || p.facts.surelyFunctions.has(full)) return true;
+  const open = p.at;
+  const close = p.match[open] ?? -1;
+  if (close < 0) return false;
+  const inner = p.tokens.slice(open + 1, close).filter((t) => t.kind !== 'space');
+  const itself = inner.some((t) => isName(t) && nameText(t) === base);
+  const single = inner.length > 0 && (inner.every((t) => t.kind === 'digit') || (isName(inner[0]) && !inner.some((t) => (t.kind === 'mark' && !'_\''.includes(t.text)) || t.kind === 'command' && !GREEK.has(t.text)) && names(inner) === 1));
+  if (itself) return false;
+  if (/^(?:[fFguyhGHUYS]|\\phi|\\varphi|\\psi|\\Phi|\\Psi)$/.test(base)) return !p.facts.bare.has(full) || /^[fuy]$/.test(base);
+  return single && !p.facts.bare.has(full);
+}
+/** Names of a token run, subscripts not counted. */
+function names(inner: readonly Token[]): number {
+  let count = 0;
+  let depth = 0;
+  inner.forEach((t, i) => {
+    if (t.kind === 'open') depth += 1;
+    else if (t.kind === 'close') depth -= 1;
+    else if (depth === 0 && isName(t) && inner[i - 1]?.text !== '_') count += 1;
+  });
+  return count;
+}
+
+function constantOf(p: State, t: Token, base: string): Expression | null {
+  const exact = p.options.exact;
+  if (base === '\\pi') return isMark(peek(p), '(') && p.facts.bare.has('\\pi') === false ? null : build.constant('pi');
+  if (base === 'e') return t.upright || exact || p.facts.eulerNumber ? build.constant('e') : null;
+  if (base === 'i' || base === 'j') {
+    if (t.upright && base === 'i') return build.constant('i');
+    return (exact && base === 'i') || (p.facts.imaginary === base && !p.bound.includes(base) && !isMark(peek(p), '(')) ? build.constant('i') : null;
+  }
+  if (base === 'I' && exact) return build.constant('i');
+  return null;
+}
+
+const isOrder = (p: State, base: string, t: Token): boolean => (base === 'O' || base === 'o') && (isMark(peek(p), '(', '[', '\\{') || (t.kind === 'word' && peek(p).kind === 'open')) && !p.options.symbols.has(base);
+
+/** O(...) or o(...), the letter already read. */
+export function order(p: State, from: number, little: boolean): Expression {
+  const args = peek(p).kind === 'open' ? [p.grammar.texArgument(p)] : bracketArguments(p);
+  const [argument] = args;
+  if (!argument) return fail(p, 'The order term is empty; write what it is of, for example O(x^3).');
+  // O(x^2, y^2): the sum of the sizes.
+  return node(p, from, { kind: 'order', little, argument: args.length === 1 ? argument : { kind: 'sum', terms: args } });
+}
+
+/** Letters of LaTeX text without backslash that spell a function before a bracket or argument: `cos(x)`, `exp(x)`, `sin x`. */
+function functionRun(p: State, from: number): Expression | null {
+  let word = p.tokens[from]?.text ?? '';
+  let k = from + 1;
+  const before = p.tokens[from - 1];
+  if (before?.kind === 'letter' && !p.tokens[from]?.spaced) return null;
+  while (k < p.end && p.tokens[k]?.kind === 'letter' && !p.tokens[k]?.spaced) {
+    word += p.tokens[k]?.text ?? '';
+    k += 1;
+  }
+  if (word.length < 2) return null;
+  while (p.tokens[k]?.kind === 'digit' && functionId(word + (p.tokens[k]?.text ?? ''))) word += p.tokens[k++]?.text ?? '';
+  const id = functionId(word) ?? (word === 'sqrt' ? 'sqrt' : null);
+  if (!id) return null;
+  const after = p.tokens[k];
+  const familiar = /^(?:sin|cos|tan|cot|sinh|cosh|tanh|exp|log|ln|arcsin|arccos|arctan|sqrt)$/.test(word);
+  if (!(after && (isMark(after, '(') || (familiar && (after.spaced || isMark(after, '^', '[') || after.kind === 'open' || after.kind === 'super'))))) return null;
+  p.at = k;
+  return applyKnown(p, from, id, word);
+}
+
+const CONSTANT_WORDS: Readonly<Record<string, Expression>> = { pi: build.constant('pi'), inf: build.constant('infinity'), infinity: build.constant('infinity'), infty: build.constant('infinity'), oo: build.constant('infinity'), Inf: build.constant('infinity') };
+
+/** An identifier of plain notation or an upright name: a constant, a function with its argument, or the canonical text of a symbol. */
+function plainWord(p: State, from: number, t: Token): Expression | string {
+  const word = t.text;
+  const before = p.tokens[from - 1];
+  void before;
+  if (word === 'e') return 'e';
+  if (word.length === 1) return word;
+  const constant = CONSTANT_WORDS[word];
+  if (constant && !p.options.symbols.has(word) && !(t.upright && word !== 'pi')) return node(p, from, { ...constant });
+  if (word === 'Pi' && !isMark(peek(p), '(')) return node(p, from, build.constant('pi'));
+  if (p.options.symbols.has(word)) return word;
+  const id = functionId(word) ?? (word === 'sqrt' || word === 'cbrt' ? word : null);
+  if (id && (t.upright || canTakeArgument(p))) return applyKnown(p, from, id, word);
+  const [head = '', ...rest] = word.split('_');
+  const greek = /^([A-Za-z]+?)(\d*)$/.exec(head);
+  const base = GREEK.has(head) ? `\\${head === 'varepsilon' ? 'epsilon' : head}` : greek && GREEK.has(greek[1] ?? '') && greek[2] ? `\\${greek[1]}_${braced(greek[2])}` : head === 'hbar' ? '\\hbar' : head;
+  if (rest.length > 0) {
+    const tail = rest.join('_');
+    return `${base}_${braced(GREEK.has(tail) ? `\\${tail}` : tail)}`;
+  }
+  return base;
+}
+
+function canTakeArgument(p: State): boolean {
+  return isMark(peek(p), '(', '^', '[', '_', "'") || peek(p).kind === 'super' || p.grammar.startsFactor(p);
+}

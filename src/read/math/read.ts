@@ -1,0 +1,148 @@
+/** The door of the formula reader: text in, one formula with its trailing conditions out. */
+import type { Expression } from '../../expression/index.ts';
+import { failure, type Outcome, success } from '../../outcome.ts';
+import { atom, startsFactor, texArgument } from './atoms.ts';
+import { gatherFacts } from './facts.ts';
+import { factor, factorRun, relation, sum, term } from './grammar.ts';
+import { lex } from './lexer.ts';
+import { type MacroTable, NO_MACROS } from './macros.ts';
+import { fail, type Grammar, isCommand, isMark, named, next, peek, type State } from './state.ts';
+import { MAX_DEPTH, type Token, TOO_DEEP, Unreadable } from './tokens.ts';
+
+export interface ReadOptions {
+  readonly macros?: MacroTable;
+  /** Canonical names that are quantities: the variable, parameters, names defined nearby. */
+  readonly symbols?: readonly string[];
+  /** Canonical names that are unspecified functions. */
+  readonly functions?: readonly string[];
+  /** An exact value: e is Euler's number, `I` the imaginary unit. */
+  readonly exact?: boolean;
+}
+
+/** What one stretch of mathematics says. */
+export interface Formula {
+  readonly expression: Expression;
+  /** Further formulas behind a comma, a gap, words or brackets: `|x| < 1`, `x \to 0`. */
+  readonly conditions: readonly Expression[];
+  /** Words that stand beside the formula. */
+  readonly remarks: readonly string[];
+  /** The symbol before a colon (`y:\ y^3 + y = x`): what the equation is to be solved for. */
+  readonly unknown?: string;
+}
+
+const grammar: Grammar = { relation, sum, term, factorRun, factor, atom, texArgument, startsFactor };
+const CLOSER: Readonly<Record<string, string>> = { '(': ')', '[': ']', '{': '}', '\\{': '\\}', 'l|': 'r|', 'left.': 'right.' };
+const MAX_LENGTH = 200_000;
+
+/** Partner of each bracket; -1 where it has none. Brackets may be mixed as in half-open intervals. Fails where nesting is too deep. */
+function pair(tokens: readonly Token[]): Int32Array {
+  const match = new Int32Array(tokens.length).fill(-1);
+  const open: number[] = [];
+  for (let i = 0; i < tokens.length; i += 1) {
+    const t = tokens[i] as Token;
+    if (t.kind === 'open' || (t.kind === 'mark' && CLOSER[t.text] !== undefined)) {
+      open.push(i);
+      if (open.length > MAX_DEPTH) throw new Unreadable(TOO_DEEP, t);
+    } else if (t.kind === 'close' || (t.kind === 'mark' && (t.text === ')' || t.text === ']' || t.text === '\\}' || t.text === 'r|' || t.text === 'right.'))) {
+      const start = open.pop();
+      if (start === undefined) throw new Unreadable(`${t.kind === 'close' ? 'A closing brace' : 'A closing bracket'} stands here without an opening one; remove it or add the opening one.`, t);
+      const begin = tokens[start] as Token;
+      const brace = (begin.kind === 'open') !== (t.kind === 'close');
+      if (brace) throw new Unreadable(begin.kind === 'open' ? 'The brace opened here is never closed; close it with }.' : `The bracket opened here is never closed; close it with ${CLOSER[begin.text] ?? ')'}.`, begin);
+      match[start] = i;
+      match[i] = start;
+    }
+  }
+  const left = open.pop();
+  if (left !== undefined) {
+    const t = tokens[left] as Token;
+    throw new Unreadable(t.kind === 'open' ? 'The brace opened here is never closed; close it with }.' : `The bracket opened here is never closed; close it with ${CLOSER[t.text] ?? ')'}.`, t);
+  }
+  return match;
+}
+
+function stateOf(text: string, notation: 'latex' | 'plain', options: ReadOptions): State {
+  if (text.length > MAX_LENGTH) throw new Unreadable('This text is too long to be one formula; select a smaller piece.', { start: 0, end: text.length });
+  const tokens = lex(text, { notation, macros: options.macros ?? NO_MACROS });
+  const match = pair(tokens);
+  const symbols = new Set(options.symbols ?? []);
+  return {
+    text,
+    tokens,
+    match,
+    options: { notation, symbols, functions: new Set(options.functions ?? []), exact: options.exact ?? false },
+    facts: gatherFacts(tokens, match),
+    grammar,
+    at: 0,
+    end: tokens.length - 1,
+    depth: 0,
+    bars: 0,
+    bound: [],
+    differentials: new Set(),
+  };
+}
+
+const isSeparator = (t: Token): boolean =>
+  t.kind === 'space' || t.kind === 'text' || isMark(t, ',', ';', '.', ':', '\\\\', '=>', '!', '?', '"', '\\}') || isCommand(t, 'implies', 'iff', 'Rightarrow', 'Leftrightarrow', 'Longrightarrow', 'therefore', 'because', 'quad', 'qquad', 'hline', 'newline', 'cr', 'forall', 'colon', 'semicolon', 'qedhere', 'square', 'Leftarrow', 'where');
+
+export function readFormula(text: string, notation: 'latex' | 'plain', options: ReadOptions = {}): Outcome<Formula> {
+  try {
+    const p = stateOf(text, notation, options);
+    let main: Expression | null = null;
+    let unknown: string | undefined;
+    const conditions: Expression[] = [];
+    const remarks: string[] = [];
+    for (;;) {
+      while (isSeparator(peek(p))) {
+        const t = next(p);
+        if (t.kind === 'text') remarks.push(t.text.trim());
+        if (isMark(t, ':') && main?.kind === 'symbol' && unknown === undefined && conditions.length === 0) {
+          unknown = main.name;
+          main = null;
+        }
+      }
+      if (peek(p).kind === 'end') break;
+      if (main === null) {
+        main = piece(p);
+        continue;
+      }
+      const from = p.at;
+      try {
+        p.depth = 0;
+        p.bars = 0;
+        conditions.push(piece(p));
+      } catch (error) {
+        if (!(error instanceof Unreadable)) throw error;
+        // A condition that cannot be read is kept as words; the formula stands without it.
+        p.at = from;
+        let end = from;
+        while (!(isSeparator(p.tokens[end] as Token) && end > from) && p.tokens[end]?.kind !== 'end') end = Math.max(end + 1, (p.match[end] ?? -1) + 1);
+        remarks.push(text.slice(p.tokens[from]?.start ?? 0, p.tokens[end - 1]?.end ?? text.length));
+        p.at = end;
+      }
+    }
+    if (!main) return failure('unreadable', 'Nothing to read here yet; select or write a formula.', { start: 0, end: text.length });
+    return success({ expression: main, conditions, remarks, ...(unknown === undefined ? {} : { unknown }) });
+  } catch (error) {
+    if (error instanceof Unreadable) return { ok: false, error: error.failure };
+    throw error;
+  }
+}
+
+/** One formula up to a separator. */
+function piece(p: State): Expression {
+  const start = p.at;
+  const value = relation(p);
+  if (p.at === start) fail(p, `${named(peek(p))} is not understood here.`);
+  const t = peek(p);
+  if (t.kind !== 'end' && !isSeparator(t) && !isMark(t, '(', '[')) {
+    fail(p, `${named(t).replace(/^./, (c) => c.toUpperCase())} is not understood here; remove it or add an operator before it.`);
+  }
+  return value;
+}
+
+/** The formula alone; conditions and words beside it are read past. */
+export function readExpression(text: string, notation: 'latex' | 'plain', options: ReadOptions = {}): Outcome<Expression> {
+  const formula = readFormula(text, notation, options);
+  return formula.ok ? success(formula.value.expression) : formula;
+}

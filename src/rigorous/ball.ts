@@ -215,13 +215,33 @@ export const subtract = (a: Ball, b: Ball, precision: number): Ball => add(a, ne
 export function multiply(a: Ball, b: Ball, precision: number): Ball {
   const mid = a.mid * b.mid;
   if (a.rad === 0n && b.rad === 0n) return rounded(mid, 0n, mid === 0n ? 0 : a.exp + b.exp, precision);
-  const rad = magnitude(a.mid) * b.rad + a.rad * (magnitude(b.mid) + b.rad);
-  return rounded(mid, rad, a.exp + b.exp, precision);
+  const sizeA = magnitude(a.mid);
+  const sizeB = magnitude(b.mid);
+  if (a.rad << 20n > sizeA && b.rad << 20n > sizeB) return multiplyWide(a, b, precision);
+  return rounded(mid, sizeA * b.rad + a.rad * (sizeB + b.rad), a.exp + b.exp, precision);
+}
+
+/** The smallest ball around all products of two wide balls. */
+function multiplyWide(a: Ball, b: Ball, precision: number): Ball {
+  const [sizeA, sizeB] = [magnitude(a.mid), magnitude(b.mid)];
+  const exp = a.exp + b.exp;
+  if (sizeA >= a.rad && sizeB >= b.rad) {
+    const corner = a.mid < 0n === b.mid < 0n ? a.rad * b.rad : -a.rad * b.rad;
+    return rounded(a.mid * b.mid + corner, sizeA * b.rad + sizeB * a.rad, exp, precision);
+  }
+  if (sizeA >= a.rad) return rounded((a.mid < 0n ? a.mid - a.rad : a.mid + a.rad) * b.mid, (sizeA + a.rad) * b.rad, exp, precision);
+  if (sizeB >= b.rad) return rounded((b.mid < 0n ? b.mid - b.rad : b.mid + b.rad) * a.mid, (sizeB + b.rad) * a.rad, exp, precision);
+  const [la, ua, lb, ub] = [a.mid - a.rad, a.mid + a.rad, b.mid - b.rad, b.mid + b.rad];
+  const low = la * ub < ua * lb ? la * ub : ua * lb;
+  const high = la * lb > ua * ub ? la * lb : ua * ub;
+  return rounded(low + high, high - low, exp - 1, precision);
 }
 
 export function square(x: Ball, precision: number): Ball {
-  if (x.rad <= magnitude(x.mid)) return multiply(x, x, precision);
-  const top = magnitude(x.mid) + x.rad;
+  // [(m-r)^2, (m+r)^2] = m^2 + r^2 +- 2mr.
+  const size = magnitude(x.mid);
+  if (x.rad <= size) return rounded(x.mid * x.mid + x.rad * x.rad, 2n * size * x.rad, 2 * x.exp, precision);
+  const top = size + x.rad;
   return rounded(top * top, top * top, 2 * x.exp - 1, precision);
 }
 

@@ -59,7 +59,18 @@ export function complexArithmetic<T>(r: RealArithmetic<T>, analytic = false): Co
     const inverse = pair(r.divide(b.re, size), r.divide(r.negate(b.im), size));
     return inverse === null ? null : multiply(a, inverse);
   };
-  const modulus = (z: Z): T => (isReal(z) ? r.absolute(z.re) : (r.sqrt(norm(z)) ?? r.absolute(z.re)));
+  /** Square root of a set known to hold no negative number but for the slack of its enclosure. */
+  const clippedRoot = (x: T): T => {
+    const top = r.upperEnd(x);
+    const high = r.isPositive(top) ? r.sqrt(top) : r.zero;
+    if (r.isNonNegative(x)) return r.sqrt(x) ?? r.zero;
+    return r.union(r.zero, high ?? r.zero);
+  };
+  const modulus = (z: Z): T => {
+    if (isReal(z)) return r.absolute(z.re);
+    if (r.isZero(z.re)) return r.absolute(z.im);
+    return clippedRoot(norm(z));
+  };
 
   /** Where the closed negative axis meets the rectangle. */
   const meetsNegativeAxis = (z: Z): boolean => r.containsZero(z.im) && !r.isPositive(z.re);
@@ -109,17 +120,16 @@ export function complexArithmetic<T>(r: RealArithmetic<T>, analytic = false): Co
     }
     if (meetsNegativeAxis(z) && analytic) return null;
     const size = modulus(z);
-    const parts = (sign: 1 | -1): T | null => {
+    const parts = (sign: 1 | -1): T => {
       const sum = r.divideInteger(sign > 0 ? r.add(size, z.re) : r.subtract(size, z.re), 2);
-      return r.sqrt(r.maximum(sum, r.zero));
+      return clippedRoot(sum);
     };
     const two = r.fromInteger(2);
     if (r.isPositive(z.re)) {
       const re = parts(1);
-      return pair(re, re === null ? null : r.divide(z.im, r.multiply(two, re)));
+      return pair(re, r.divide(z.im, r.multiply(two, re)));
     }
     const im = parts(-1);
-    if (im === null) return null;
     if (r.isNonNegative(z.im)) {
       const re = r.isPositive(im) ? r.divide(z.im, r.multiply(two, im)) : parts(1);
       return pair(re, im);

@@ -1,0 +1,159 @@
+/** Calls of known functions: elementary ones by their own series, others by what their description says. */
+import type { Element } from '../algebra/types.ts';
+import { build, type CallNode, type Expression, Q } from '../expression/index.ts';
+import { describe, type FunctionDescription } from '../functions/index.ts';
+import { Declined } from '../outcome.ts';
+import {
+  add, compareEventually, divide, eventualSign, exactOf, exponential, growth, hyperbolic, inverse, type InverseFunction, logarithm, type Multi, negate, power,
+  Series, sineCosine, split, subtract, withExact,
+} from '../series/index.ts';
+import { evaluateDescribed } from './described.ts';
+import type { Session } from './session.ts';
+
+export type Evaluate = (s: Session, e: Expression) => Multi;
+
+export function evaluateCall(s: Session, e: CallNode, evaluate: Evaluate): Multi {
+  const c = s.context;
+  const args = e.args.map((a) => evaluate(s, a));
+  const description = describe(e.function);
+  const direct = elementary[e.function];
+  const [first] = args;
+  if (args.every((a) => !(a instanceof Series))) return c.field.call(e.function, args as readonly Element[]);
+  if (direct && first !== undefined && args.length === 1) return remembered(s, e.function, first, () => direct(s, first));
+  const several = compound[e.function];
+  if (several) return several(s, args);
+  if (!description) throw new Declined('unknown-function', `The function ${e.function} is not known; write it out or choose a known name.`);
+  if (description.definition) return evaluateDefinition(s, description, args, evaluate);
+  return evaluateDescribed(s, description, args, evaluate);
+}
+
+/** The same call of the same series is the same result. */
+function remembered(s: Session, key: string, argument: Multi, compute: () => Multi): Multi {
+  if (!(argument instanceof Series)) return compute();
+  let known = s.calls.get(argument);
+  if (!known) s.calls.set(argument, (known = new Map()));
+  const found = known.get(key);
+  if (found !== undefined) return found;
+  const value = compute();
+  known.set(key, value);
+  return value;
+}
+
+/** Evaluates the definition once, with the arguments bound to fresh symbols. */
+function evaluateDefinition(s: Session, description: FunctionDescription, args: readonly Multi[], evaluate: Evaluate): Multi {
+  const names = args.map((_, k) => `argument'${k}`);
+  const tree = description.definition?.(args.map((a, k) => (a instanceof Series ? build.symbol(names[k] as string) : exactOf(s.context, a))));
+  if (!tree) throw new Error('a definition that was there is gone');
+  const bindings = new Map(s.bindings);
+  args.forEach((a, k) => {
+    if (a instanceof Series) bindings.set(names[k] as string, a);
+  });
+  const inner: Session = { ...s, bindings, memo: new Map(), varying: new Map() };
+  return withExact(evaluate(inner, tree), () => build.call(description.id, ...args.map((a) => exactOf(s.context, a))));
+}
+
+type Elementary = (s: Session, f: Multi) => Multi;
+const inverseOf =
+  (id: InverseFunction): Elementary =>
+  (s, f) =>
+    inverse(s.context, id, f);
+const quotientOf = (s: Session, id: string, f: Multi, a: Multi, b: Multi): Multi => withExact(divide(s.context, a, b), () => build.call(id, exactOf(s.context, f)));
+
+const elementary: Readonly<Record<string, Elementary>> = {
+  exp: (s, f) => exponential(s.context, f),
+  log: (s, f) => logarithm(s.context, f),
+  sqrt: (s, f) => power(s.context, f, Q.HALF),
+  sin: (s, f) => sineCosine(s.context, f).sine,
+  cos: (s, f) => sineCosine(s.context, f).cosine,
+  tan: (s, f) => {
+    const { sine, cosine } = sineCosine(s.context, f);
+    return quotientOf(s, 'tan', f, sine, cosine);
+  },
+  cot: (s, f) => {
+    const { sine, cosine } = sineCosine(s.context, f);
+    return quotientOf(s, 'cot', f, cosine, sine);
+  },
+  sinh: (s, f) => hyperbolic(s.context, f).sine,
+  cosh: (s, f) => hyperbolic(s.context, f).cosine,
+  tanh: (s, f) => {
+    const { sine, cosine } = hyperbolic(s.context, f);
+    return quotientOf(s, 'tanh', f, sine, cosine);
+  },
+  coth: (s, f) => {
+    const { sine, cosine } = hyperbolic(s.context, f);
+    return quotientOf(s, 'coth', f, cosine, sine);
+  },
+  asin: inverseOf('asin'),
+  acos: inverseOf('acos'),
+  atan: inverseOf('atan'),
+  asinh: inverseOf('asinh'),
+  acosh: inverseOf('acosh'),
+  atanh: inverseOf('atanh'),
+  abs: (s, f) => {
+    const sign = eventualSign(s.context, f);
+    if (sign === 'complex') throw new Declined('no-expansion', 'The absolute value of a complex quantity is not expanded; write it as a square root of the sum of squares.');
+    noteSide(s, f);
+    return sign === -1 ? negate(s.context, f) : f;
+  },
+  sign: (s, f) => {
+    const sign = eventualSign(s.context, f);
+    if (sign === 'complex') throw new Declined('no-expansion', 'The sign of a complex quantity is not expanded; use a real argument.');
+    noteSide(s, f);
+    return Q.rational(sign);
+  },
+  heaviside: (s, f) => {
+    const sign = eventualSign(s.context, f);
+    if (sign === 'complex') throw new Declined('no-expansion', 'The step function of a complex quantity is not expanded; use a real argument.');
+    noteSide(s, f);
+    return sign === 0 ? Q.HALF : Q.rational(sign === 1 ? 1 : 0);
+  },
+  floor: (s, f) => rounded(s, f, (q) => Q.floor(q)),
+  ceil: (s, f) => negate(s.context, rounded(s, negate(s.context, f), (q) => Q.floor(q))),
+  trunc: (s, f) => (eventualSign(s.context, f) === -1 ? negate(s.context, rounded(s, negate(s.context, f), (q) => Q.floor(q))) : rounded(s, f, (q) => Q.floor(q))),
+};
+
+/** A function of the sign of f is the same on both sides only if f keeps away from zero. */
+function noteSide(s: Session, f: Multi): void {
+  if (growth(s.context, f) !== 'finite') s.context.notes.sided = true;
+}
+
+function rounded(s: Session, f: Multi, floor: (q: { num: bigint; den: bigint }) => bigint): Multi {
+  const c = s.context;
+  const { large, constant, small } = split(c, f);
+  const limit = c.field.asRational(constant);
+  if (large || !limit) throw new Declined('no-expansion', 'Rounding is expanded only where its argument has a rational limit; choose another point.');
+  if (limit.den !== 1n || !small) return Q.rational(floor(limit));
+  s.context.notes.sided = true;
+  return Q.rational(eventualSign(c, small) === -1 ? limit.num - 1n : limit.num);
+}
+
+type Several = (s: Session, args: readonly Multi[]) => Multi;
+const extreme =
+  (wanted: 1 | -1): Several =>
+  (s, args) =>
+    args.reduce((best, next) => {
+      const sign = compareEventually(s.context, next, best);
+      if (sign === 'complex') throw new Declined('no-expansion', 'The largest or smallest of complex quantities has no meaning; use real arguments.');
+      noteSide(s, subtract(s.context, next, best));
+      return sign === wanted ? next : best;
+    });
+
+const compound: Readonly<Record<string, Several>> = {
+  min: extreme(-1),
+  max: extreme(1),
+  atan2: (s, [y, x]) => {
+    const c = s.context;
+    if (y === undefined || x === undefined) throw new Declined('bad-request', 'atan2 takes two arguments, y and x.');
+    const right = eventualSign(c, x);
+    const up = eventualSign(c, y);
+    if (right === 'complex' || up === 'complex') throw new Declined('no-expansion', 'atan2 takes real arguments.');
+    const pi = c.field.fromExpression(build.constant('pi'));
+    if (right === 0) return up === 0 ? Q.ZERO : c.field.multiply(pi, Q.rational(up, 2));
+    noteSide(s, x);
+    const angle = inverse(c, 'atan', divide(c, y, x));
+    if (right === 1) return angle;
+    noteSide(s, y);
+    return add(c, angle, up === -1 ? c.field.negate(pi) : pi);
+  },
+};
+

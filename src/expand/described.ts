@@ -1,0 +1,101 @@
+/** A function by its description: local form at singular places and infinity, differential equation or derivative at regular points. */
+import type { Element } from '../algebra/types.ts';
+import { build, type Expression } from '../expression/index.ts';
+import type { FormalSeries, FunctionDescription, LocalForm, Place } from '../functions/index.ts';
+import { Declined } from '../outcome.ts';
+import { alongDerivative, compose, eventualSign, exactOf, growth, leading, type Multi, Series, split, withExact } from '../series/index.ts';
+import type { Evaluate } from './calls.ts';
+import { bind, freshSymbol, type Session } from './session.ts';
+import { taylorFromEquation } from './equation.ts';
+
+export function evaluateDescribed(s: Session, d: FunctionDescription, args: readonly Multi[], evaluate: Evaluate): Multi {
+  const c = s.context;
+  const index = args.findIndex((a) => a instanceof Series);
+  const argument = args[index];
+  if (!(argument instanceof Series) || args.some((a, k) => k !== index && a instanceof Series)) {
+    throw new Declined('no-expansion', `${title(d)} is expanded in one of its arguments at a time; keep the others constant.`);
+  }
+  const key = `${d.id}:${args.map((a, k) => (k === index ? '*' : c.field.key(a as Element))).join(',')}`;
+  let known = s.calls.get(argument);
+  if (!known) s.calls.set(argument, (known = new Map()));
+  const found = known.get(key);
+  if (found !== undefined) return found;
+  const remember = (value: Multi): void => void known.set(key, value);
+  const value = withExact(inOneArgument(s, d, args, index, argument, evaluate, remember), () => build.call(d.id, ...args.map((a) => exactOf(c, a))));
+  remember(value);
+  return value;
+}
+
+const title = (d: FunctionDescription): string => d.title.charAt(0).toUpperCase() + d.title.slice(1);
+
+function inOneArgument(s: Session, d: FunctionDescription, args: readonly Multi[], index: number, f: Series, evaluate: Evaluate, remember: (value: Multi) => void): Multi {
+  const c = s.context;
+  const { large, constant, small } = split(c, f);
+  const z = build.symbol(freshSymbol(s, 'z'));
+  const trees = args.map((a, k) => (k === index ? z : exactOf(c, a)));
+  if (large) {
+    const sign = eventualSign(c, large);
+    if (sign === 'complex' || sign === 0) throw new Declined('no-expansion', `${title(d)} is not expanded towards complex infinity; use a real direction.`);
+    const form = d.local?.(trees, index, { kind: 'infinite', argument: z, direction: sign });
+    if (form) return evaluateForm(bind(s, [[z.kind === 'symbol' ? z.name : '', f]]), form, evaluate);
+    if (d.local) {
+      const general = d.parity && sign === -1 ? 'its behaviour for large negative arguments is not known here' : 'its behaviour for large arguments is not known here';
+      throw new Declined('no-expansion', `${title(d)}: ${general}; choose a finite point.`);
+    }
+    throw new Declined('no-expansion', `${title(d)} has no known expansion for a large argument; choose a finite point.`);
+  }
+  if (!small || (small instanceof Series && leading(c, small) === null)) return c.field.call(d.id, args.map((a, k) => (k === index ? constant : (a as Element))));
+  const offset = freshSymbol(s, 'u');
+  const sign = eventualSign(c, small);
+  const place: Place = {
+    kind: 'finite',
+    center: exactOf(c, constant),
+    offset: build.symbol(offset),
+    side: sign === 1 ? 'right' : sign === -1 ? 'left' : 'complex',
+  };
+  const form = d.local?.(trees, index, place) ?? null;
+  if (form) return evaluateForm(bind(s, [[(z as { name: string }).name, f], [offset, small]]), form, evaluate);
+  const constants = trees.map((t, k) => (k === index ? exactOf(c, constant) : t));
+  const taylor = taylorFromEquation(c, d, constants, index, constant);
+  if (taylor) return compose(c, taylor, small);
+  const slope = d.derivative?.(trees, index) ?? null;
+  if (!slope) throw new Declined('no-expansion', `${title(d)} has no known expansion at this point; choose another one.`);
+  return alongDerivative(
+    c,
+    f,
+    (at) => c.field.call(d.id, args.map((a, k) => (k === index ? at : (a as Element)))),
+    (g, self) => {
+      if (g === f) remember(self);
+      return evaluate(bind(s, [[(z as { name: string }).name, g]]), slope);
+    },
+  );
+}
+
+/** Evaluates a local form: its formal series become series of their arguments, then its body. */
+export function evaluateForm(s: Session, form: LocalForm, evaluate: Evaluate): Multi {
+  const c = s.context;
+  c.notes.sided = true;
+  for (const assumption of form.assumptions ?? []) c.notes.assumptions.add(assumption);
+  const leaves: [string, Multi][] = [];
+  for (const [name, formal] of Object.entries(form.formals)) leaves.push([name, evaluateFormal(s, formal, evaluate)]);
+  if (form.subdominantDropped) c.notes.subdominantDropped = true;
+  return evaluate(bind(s, leaves), form.body);
+}
+
+export function evaluateFormal(s: Session, formal: FormalSeries, evaluate: Evaluate): Multi {
+  const c = s.context;
+  const argument = evaluate(s, formal.argument);
+  const size = growth(c, argument);
+  if (size === 'large' || size === 'finite') throw new Declined('no-expansion', 'A series of a function was asked for where its argument is not small; choose another point.');
+  if (formal.divergent) c.notes.divergent = true;
+  const coefficients: Element[] = [];
+  const coefficient = (k: number): Element | null => {
+    if (formal.length !== undefined && k >= formal.length) return null;
+    const known = coefficients[k];
+    if (known) return known;
+    const raw: Expression | { num: bigint; den: bigint } = formal.coefficient(k);
+    return (coefficients[k] = 'kind' in raw ? c.field.fromExpression(raw) : raw);
+  };
+  return compose(c, coefficient, argument);
+}
+

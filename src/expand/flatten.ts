@@ -1,0 +1,134 @@
+/** The terms of a multiseries one after the other, in decreasing size. */
+import type { Element } from '../algebra/types.ts';
+import { build, type Expression, Q } from '../expression/index.ts';
+import { Declined } from '../outcome.ts';
+import { addElements, type Context, exactOf, isOscillating, isRational, isZero, type Multi, negateElement, nextTerm, type ScaleElement, Series } from '../series/index.ts';
+
+/** One monomial: coefficient * t^power * L^log * product of element^exponent * oscillation. With `order` only its size is known. */
+export interface RawTerm {
+  readonly coefficient: Element;
+  readonly power: Element;
+  /** Exponent of log(1/t), if it is an integer; others are among the factors. */
+  readonly log: number;
+  readonly factors: readonly { readonly element: ScaleElement; readonly exponent: Element }[];
+  /** Bounded oscillating factor as a tree in the context's symbol. */
+  readonly oscillation: Expression | null;
+  readonly order: boolean;
+}
+
+type Factor = RawTerm['factors'][number];
+
+export function* rawTerms(c: Context, m: Multi, outer: readonly Factor[] = []): Generator<RawTerm> {
+  if (!(m instanceof Series)) {
+    if (!isZero(c, m)) yield* constantTerms(c, m, outer);
+    return;
+  }
+  for (let k = 0; ; k += 1) {
+    const here = m.stream.at(k);
+    if (!here) return;
+    if (here.order) {
+      yield { ...shapeOf(c, [...outer, { element: m.element, exponent: here.exponent }], here.coefficient), order: true };
+      return;
+    }
+    const lead = nextTermBeforeOrder(c, m, k);
+    if (lead === 'order') continue;
+    if (!lead) return;
+    k = lead.index;
+    let truncated = false;
+    for (const term of rawTerms(c, lead.coefficient, [...outer, { element: m.element, exponent: lead.exponent }])) {
+      truncated ||= term.order;
+      yield term;
+    }
+    if (truncated) return;
+  }
+}
+
+/** The next non-zero term; 'order' where the term at k is zero and an O-term may follow before any non-zero one. */
+function nextTermBeforeOrder(c: Context, m: Series, k: number): ReturnType<typeof nextTerm> | 'order' {
+  const here = m.stream.at(k);
+  if (here && isZero(c, here.coefficient) && m.stream.at(k + 1)?.order) return 'order';
+  return nextTerm(c, m, k);
+}
+
+function* constantTerms(c: Context, e: Element, outer: readonly Factor[]): Generator<RawTerm> {
+  const shape = shapeOf(c, outer, Q.ONE);
+  if (!isOscillating(c, e)) {
+    yield { ...shape, coefficient: e, order: false };
+    return;
+  }
+  for (const part of oscillatingParts(c, c.field.toExpression(e))) yield { ...shape, coefficient: part.coefficient, oscillation: part.factor, order: false };
+}
+
+/** A sum of products, each as a constant and a factor that oscillates. */
+function oscillatingParts(c: Context, tree: Expression): { readonly coefficient: Element; readonly factor: Expression | null }[] {
+  const depends = (e: Expression): boolean => c.field.parameters(c.field.fromExpression(e)).includes(c.local);
+  const parts: { coefficient: Element; factor: Expression | null }[] = [];
+  const visit = (e: Expression, constants: readonly Expression[], factors: readonly Expression[]): void => {
+    if (e.kind === 'negation') return visit(e.operand, [...constants, build.number(-1)], factors);
+    if (e.kind === 'sum' && factors.length === 0) return e.terms.forEach((t) => visit(t, constants, factors));
+    if (e.kind === 'quotient' && !depends(e.denominator)) return visit(e.numerator, [...constants, build.power(e.denominator, -1)], factors);
+    if (e.kind === 'product') {
+      const fixed = e.factors.filter((f) => !depends(f));
+      const moving = e.factors.filter(depends);
+      const [only] = moving;
+      if (moving.length === 1 && only && (fixed.length > 0 || only.kind !== 'product')) return visit(only, [...constants, ...fixed], factors);
+      return visit2(moving, [...constants, ...fixed]);
+    }
+    return visit2(depends(e) ? [e] : [], depends(e) ? constants : [...constants, e]);
+  };
+  const visit2 = (moving: readonly Expression[], constants: readonly Expression[]): void => {
+    parts.push({ coefficient: c.field.fromExpression(build.product(...constants)), factor: moving.length > 0 ? build.product(...moving) : null });
+  };
+  visit(tree, [], []);
+  return parts;
+}
+
+/** Sorts scale elements into the power of t, the power of L and the rest. The bound of an O-term adds its own slower factors. */
+function shapeOf(c: Context, outer: readonly Factor[], bound: Multi): Omit<RawTerm, 'order'> {
+  const all = [...outer];
+  for (let rest: Multi = bound; rest instanceof Series; ) {
+    const lead = nextTerm(c, rest, 0);
+    if (!lead) break;
+    all.push({ element: rest.element, exponent: lead.exponent });
+    rest = lead.coefficient;
+  }
+  let power: Element = Q.ZERO;
+  let log = 0;
+  const factors: Factor[] = [];
+  for (const f of all) {
+    if (isRational(f.exponent) && f.exponent.num === 0n) continue;
+    if (f.element.kind === 'local') power = addElements(c, power, f.exponent);
+    else if (f.element.kind === 'logarithm' && f.element.depth === 1 && isRational(f.exponent) && f.exponent.den === 1n) log -= Number(f.exponent.num);
+    else factors.push(f);
+  }
+  return { coefficient: Q.ONE, power, log, factors, oscillation: null };
+}
+
+/** The product of the factors as a tree in the context's symbol; null for none. */
+export function factorTree(c: Context, factors: readonly Factor[]): Expression | null {
+  if (factors.length === 0) return null;
+  return build.product(...factors.map((f) => factorPower(c, f)));
+}
+
+function factorPower(c: Context, f: Factor): Expression {
+  const { expression } = f.element;
+  if (f.element.kind === 'exponential' && expression.kind === 'power') {
+    const exponent = build.product(exactOf(c, f.exponent), expression.exponent);
+    return build.power(build.constant('e'), tidy(c, exponent));
+  }
+  if (f.element.kind === 'logarithm' && expression.kind === 'power') {
+    const up = negateElement(c, f.exponent);
+    return isRational(up) && up.num === 1n && up.den === 1n ? expression.base : build.power(expression.base, exactOf(c, up));
+  }
+  return build.power(expression, exactOf(c, f.exponent));
+}
+
+/** The field's normal form where it has one. */
+function tidy(c: Context, e: Expression): Expression {
+  try {
+    return c.field.toExpression(c.field.fromExpression(e));
+  } catch (error) {
+    if (error instanceof Declined) return e;
+    throw error;
+  }
+}

@@ -1,0 +1,40 @@
+/** What one evaluation of trees shares: the multiseries context, what the symbols stand for, and results already found. */
+import type { Expression } from '../expression/index.ts';
+import type { Context, Multi, Series } from '../series/index.ts';
+
+export interface Session {
+  readonly context: Context;
+  /** Symbols that vary, and what they stand for. All others are parameters. */
+  readonly bindings: ReadonlyMap<string, Multi>;
+  /** By node. */
+  readonly memo: Map<Expression, Multi>;
+  readonly varying: Map<Expression, boolean>;
+  /** Calls by their varying argument, then by function and constant arguments: equations for a function refer to itself. */
+  readonly calls: WeakMap<Series, Map<string, Multi>>;
+  readonly depth: { value: number };
+  readonly fresh: { value: number };
+}
+
+export const openSession = (context: Context, bindings: ReadonlyMap<string, Multi>): Session => ({
+  context,
+  bindings,
+  memo: new Map(),
+  varying: new Map(),
+  calls: new WeakMap(),
+  depth: { value: 0 },
+  fresh: { value: 0 },
+});
+
+/** The same session with more symbols bound. */
+export const bind = (s: Session, entries: Iterable<readonly [string, Multi]>): Session => ({
+  ...s,
+  bindings: new Map([...s.bindings, ...entries]),
+  memo: new Map(),
+  varying: new Map(),
+});
+
+/** A symbol name that no reader produces. */
+export function freshSymbol(s: Session, stem: string): string {
+  s.fresh.value += 1;
+  return `${stem}'${s.fresh.value}`;
+}

@@ -1,0 +1,121 @@
+/** Lazily found terms in strictly increasing exponents (of one scale element), and the arithmetic of such streams. */
+import type { Element } from '../algebra/types.ts';
+import { Q } from '../expression/index.ts';
+import { compareExponents } from './exponent.ts';
+import { addElements, type Context, isLiteralZero, type Multi, Stream, type Term } from './multi.ts';
+
+
+export const finiteStream = (terms: readonly Term[]): Stream => new Stream((k) => terms[k] ?? null);
+export const mapStream = (s: Stream, f: (term: Term) => Term): Stream =>
+  new Stream((k) => {
+    const term = s.at(k);
+    return term && f(term);
+  });
+/** The terms from index on. */
+export const dropTerms = (s: Stream, count: number): Stream => new Stream((k) => s.at(k + count));
+/** The first terms only. */
+export const takeTerms = (s: Stream, count: number): Stream => new Stream((k) => (k < count ? s.at(k) : null));
+export const prepend = (first: Term, rest: Stream): Stream => new Stream((k) => (k === 0 ? first : rest.at(k - 1)));
+
+/** How coefficients are combined; given by the ring of multiseries, which is built on streams. */
+export interface CoefficientRing {
+  add(a: Multi, b: Multi): Multi;
+  multiply(a: Multi, b: Multi): Multi;
+  scale(a: Multi, by: Element): Multi;
+  /** A coefficient whose size bounds both. */
+  envelope(a: Multi, b: Multi): Multi;
+}
+
+export function sumStream(c: Context, ring: CoefficientRing, a: Stream, b: Stream): Stream {
+  let i = 0;
+  let j = 0;
+  return new Stream(() => {
+    const x = a.at(i);
+    const y = b.at(j);
+    if (!x || !y) {
+      if (x) i += 1;
+      else j += 1;
+      return x ?? y;
+    }
+    const sign = compareExponents(c, x.exponent, y.exponent);
+    if (sign < 0) {
+      i += 1;
+      return x;
+    }
+    if (sign > 0) {
+      j += 1;
+      return y;
+    }
+    i += 1;
+    j += 1;
+    if (x.order || y.order) return { exponent: x.exponent, coefficient: ring.envelope(x.coefficient, y.coefficient), order: true };
+    return { exponent: x.exponent, coefficient: ring.add(x.coefficient, y.coefficient) };
+  });
+}
+
+interface Row {
+  readonly index: number;
+  column: number;
+  /** Exponent of the pair at (index, column); null while it has to be fetched. */
+  head: Element | null;
+}
+
+/**
+ * Product of two streams by merging rows; term k looks at no more than k + 1 terms of either factor, so that a factor may be defined through the product.
+ * `weight(p, q)` multiplies the pair with exponents p and q. O(n) comparisons and as many multiplications a term.
+ */
+export function productStream(c: Context, ring: CoefficientRing, a: Stream, b: Stream, weight?: (p: Element, q: Element) => Element): Stream {
+  const rows: Row[] = [];
+  let opened = 0;
+  let used: Row[] = [];
+  return new Stream((k) => {
+    c.budget.check();
+    if (k === 0) {
+      rows.push({ index: 0, column: 0, head: null });
+      opened = 1;
+    }
+    for (const row of used) {
+      if (row.column === 0) {
+        rows.push({ index: opened, column: 0, head: null });
+        opened += 1;
+      }
+      row.column += 1;
+      row.head = null;
+    }
+    used = [];
+    let least: Element | null = null;
+    for (let r = 0; r < rows.length; r += 1) {
+      const row = rows[r] as Row;
+      if (row.head === null) {
+        const x = a.at(row.index);
+        const y = x && b.at(row.column);
+        if (!x || !y) {
+          rows.splice(r, 1);
+          r -= 1;
+          continue;
+        }
+        row.head = addElements(c, x.exponent, y.exponent);
+      }
+      const sign: number = least === null ? -1 : compareExponents(c, row.head, least);
+      if (sign < 0) {
+        least = row.head;
+        used = [row];
+      } else if (sign === 0) used.push(row);
+    }
+    if (least === null) return null;
+    let order = false;
+    let total: Multi = Q.ZERO;
+    for (const row of used) {
+      const x = a.at(row.index) as Term;
+      const y = b.at(row.column) as Term;
+      if (isLiteralZero(x.coefficient) || isLiteralZero(y.coefficient)) continue;
+      let value = ring.multiply(x.coefficient, y.coefficient);
+      if (weight && !(x.order || y.order)) value = ring.scale(value, weight(x.exponent, y.exponent));
+      const uncertain = x.order === true || y.order === true;
+      if (uncertain || order) total = isLiteralZero(total) ? value : ring.envelope(total, value);
+      else total = isLiteralZero(total) ? value : ring.add(total, value);
+      order ||= uncertain;
+    }
+    return order ? { exponent: least, coefficient: total, order: true } : { exponent: least, coefficient: total };
+  });
+}

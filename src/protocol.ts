@@ -156,6 +156,8 @@ export interface ExpandAnswer {
   readonly latex: string;
   /** One line of Unicode. */
   readonly text: string;
+  /** Function = expansion, typeset. */
+  readonly equation?: string;
   readonly numeric: NumericAnswer;
   readonly general?: string;
   readonly radius?: { readonly value: string; readonly nearest?: string };

@@ -2,7 +2,8 @@
 import { build, Q, PLAIN_STYLE, type DocumentStyle, type Expression, type Relation } from '../expression/index.ts';
 import { splitSign } from './layout.ts';
 import { describe } from './names.ts';
-import { latexSymbol } from './symbols.ts';
+import { isGreekWord, latexSymbol } from './symbols.ts';
+import { enclosedArguments, isCallShape } from './template.ts';
 
 /** How tightly a text binds. A part in a place that needs more than it has gets parentheses. */
 const enum Level {
@@ -209,7 +210,7 @@ class LatexWriter {
     if (opens && leftFactor?.kind === 'symbol' && FUNCTION_LETTERS.test(leftFactor.name)) return `${left} \\cdot ${right}`;
     if (opens && leftFactor?.kind === 'apply') return `${left} \\cdot ${right}`;
     if (/^(?:\\[dt]?frac)/.test(right) && leftFactor?.kind === 'number') return `${left} \\cdot ${right}`;
-    return /[A-Za-z})]$/.test(left) && /^[A-Za-z\\(]/.test(right) ? `${left} ${right}` : left + right;
+    return (/[A-Za-z})]$/.test(left) || /\^\d$/.test(left)) && /^[A-Za-z\\(]/.test(right) ? `${left} ${right}` : left + right;
   }
 
   power(base: Expression, exponent: Expression): Written {
@@ -220,15 +221,15 @@ class LatexWriter {
     }
     const upper = this.exponent(exponent);
     if (base.kind === 'call' && exponent.kind === 'number' && Q.isInteger(exponent.value) && exponent.value.num > 1n) {
-      const name = this.commandName(base.function);
-      if (name !== null && base.args.length === 1) {
+      const name = base.function === 'exp' && this.style.exponential === 'power' ? null : this.commandName(base.function);
+      if (name !== null && BARE_NAMES.test(name) && base.args.length === 1) {
         const args = base.args.map((a) => this.write(a));
         return this.prefixCall(`${name}^${upper.text}`, args, base.args, false);
       }
     }
     let inner = this.write(base);
-    const needsParentheses = inner.level < Level.Atom || base.kind === 'power' || base.kind === 'root' || base.kind === 'quotient' || (base.kind === 'number' && base.value.den !== 1n) || base.kind === 'call' || (base.kind === 'apply' && base.args.length > 0);
-    if (needsParentheses && !(base.kind === 'call' && this.isDelimited(base.function))) inner = this.parenthesised(inner);
+    const needsParentheses = inner.level < Level.Atom || base.kind === 'power' || base.kind === 'root' || base.kind === 'quotient' || (base.kind === 'number' && base.value.den !== 1n) || (base.kind === 'apply' && base.args.length > 0);
+    if (needsParentheses) inner = this.parenthesised(inner);
     const text = /'+$/.test(inner.text) ? `{${inner.text}}^${upper.text}` : `${inner.text}^${upper.text}`;
     return { text, level: Level.Power, tall: inner.tall };
   }
@@ -243,12 +244,8 @@ class LatexWriter {
     if (id === 'log') return this.style.logarithm;
     if (id === 'exp') return '\\exp';
     const known = describe(id);
-    if (known) return known.names.latexForm ? null : (known.names.latex[0] ?? null);
-    return `\\operatorname{${id.replace(/_/g, '\\_')}}`;
-  }
-
-  isDelimited(id: string): boolean {
-    return id === 'abs' || id === 'floor' || id === 'ceil' || id === 'binomial';
+    if (known?.names.latexForm) return null;
+    return standardCommand(known?.names.latex[0] ?? `\\operatorname{${id.replace(/_/g, '\\_')}}`);
   }
 
   call(id: string, args: readonly Expression[], delimited = false): Written {
@@ -263,17 +260,31 @@ class LatexWriter {
       return { text: `${inner.text}!`, level: Level.Power, tall };
     }
     const form = describe(id)?.names.latexForm;
-    if (form) return { text: form(texts), level: Level.Power, tall };
+    if (form) {
+      const safe = enclosedArguments(form, args.length);
+      const text = this.grown(form(written.map((w, i) => (safe[i] === true || w.level >= Level.Power ? w : this.parenthesised(w)).text)), texts, tall);
+      return { text, level: isCallShape(text) && !/^\\(?:ln|log|(?:arc)?(?:sin|cos|tan))/.test(text) ? Level.Atom : Level.Power, tall };
+    }
     return this.prefixCall(this.commandName(id) ?? `\\operatorname{${id}}`, written, args, delimited);
+  }
+
+  /** Brackets of a template that stand around a tall list of arguments grow with it. */
+  grown(text: string, args: readonly string[], tall: boolean): string {
+    if (!tall || this.style.parentheses !== 'auto') return text;
+    for (let i = 0; i < args.length; i += 1) {
+      const inside = `(${args.slice(i).join(', ')})`;
+      if (text.endsWith(inside)) return `${text.slice(0, -inside.length)}\\left${inside.slice(0, -1)}\\right)`;
+    }
+    return text;
   }
 
   prefixCall(name: string, written: readonly Written[], args: readonly Expression[], delimited: boolean): Written {
     const [only] = args;
     const tall = written.some((w) => w.tall);
     const text = written.map((w) => w.text).join(', ');
-    if (args.length === 1 && only && !delimited && standsBare(only, text)) return { text: glue(name, `${/^[A-Za-z0-9]/.test(text) ? ' ' : ''}${text}`), level: Level.Prefix, tall };
+    if (args.length === 1 && only && !delimited && BARE_NAMES.test(name) && standsBare(only, text)) return { text: glue(name, `${/^[A-Za-z0-9]/.test(text) ? ' ' : ''}${text}`), level: Level.Prefix, tall };
     const grows = tall && this.style.parentheses === 'auto';
-    return { text: grows ? `${name}\\left(${text}\\right)` : `${name}(${text})`, level: Level.Power, tall };
+    return { text: grows ? `${name}\\left(${text}\\right)` : `${name}(${text})`, level: name.includes('^') || args.length !== 1 || BARE_NAMES.test(name) ? Level.Power : Level.Atom, tall };
   }
 
   apply(name: string, args: readonly Expression[], derivatives: readonly number[]): Written {
@@ -319,6 +330,16 @@ class LatexWriter {
         return atom(`\\left(${args.map((a) => this.write(a).text).join(', ')}\\right)`);
     }
   }
+}
+
+/** Names after which an author leaves the parentheses away, and which take a power before their argument. */
+const BARE_NAMES = /^\\(?:(?:arc)?(?:sin|cos|tan)|cot|sec|csc|(?:sin|cos|tan|cot)h|ln|log|lg|exp|operatorname\{(?:ar[cs]?\w+|sech|csch)\})(?:\^(?:.|\{[^{}]*\}))?$/;
+/** Commands that LaTeX defines without packages; other function names are written as operators. */
+const STANDARD_COMMANDS = new Set('arccos arcsin arctan arg cos cosh cot coth csc deg det dim exp gcd hom inf ker lg lim ln log max min Pr sec sin sinh sup tan tanh'.split(' '));
+
+function standardCommand(name: string): string {
+  const word = /^\\([A-Za-z]+)$/.exec(name)?.[1];
+  return word === undefined || STANDARD_COMMANDS.has(word) || isGreekWord(word) ? name : `\\operatorname{${word}}`;
 }
 
 const atom = (text: string): Written => ({ text, level: Level.Atom, tall: false });

@@ -3,6 +3,7 @@ import { build, Q, type ConstantName, type Expression } from '../expression/inde
 import { atom, Binding, enclosed, type Dialect, type Piece, writeLinear } from './linear.ts';
 import { asPiece } from './mpmath.ts';
 import { describe } from './names.ts';
+import { enclosedArguments } from './template.ts';
 import { superscript, unicodeSymbol } from './symbols.ts';
 
 const CONSTANTS: Readonly<Record<ConstantName, string>> = { pi: 'π', e: 'e', i: 'i', eulerGamma: 'γ', catalan: 'G', glaisher: 'A', infinity: '∞' };
@@ -55,7 +56,10 @@ const UNICODE: Dialect = {
     if (id === 'exp' && args[0]) return UNICODE.power(build.constant('e'), args[0], write);
     if (id === 'factorial' && args[0]) return { text: `${enclosed(write(args[0]), Binding.Atom)}!`, binding: Binding.Power };
     const form = describe(id)?.names.unicodeForm;
-    if (form) return asPiece(signed(form(texts)));
+    if (form) {
+      const safe = enclosedArguments(form, args.length);
+      return asPiece(signed(form(args.map((a, i) => (safe[i] === true ? (texts[i] ?? '') : enclosed(write(a), Binding.Atom))))));
+    }
     return atom(`${unicodeName(id)}(${texts.join(', ')})`);
   },
   other(e, write) {
@@ -114,7 +118,8 @@ function unicodeName(id: string): string {
   const [first] = describe(id)?.names.latex ?? [];
   if (first === undefined) return id;
   const operator = /^\\operatorname\*?\{(.*)\}$/.exec(first);
-  return operator?.[1] ?? unicodeSymbol(first);
+  const name = operator?.[1] ?? unicodeSymbol(first);
+  return /^[\p{L}\p{N}′₀-₉]+$/u.test(name) ? name : id;
 }
 
 /** Factors that need no dot between them: a number before letters, single letters, a parenthesis after a number. */

@@ -1,0 +1,69 @@
+/** Wires the parts together. Nothing is computed and no worker is started before something is asked. */
+import * as vscode from 'vscode';
+import { type ClientOptions, createEngineClient } from '../worker/client.ts';
+import { registerActions } from './actions.ts';
+import { registerCommands } from './commands.ts';
+import { Consultant } from './consultant.ts';
+import { registerEquationLinks } from './equationLinks.ts';
+import { registerHints } from './hints.ts';
+import { registerHover } from './hover.ts';
+import { Log } from './log.ts';
+import { Memory } from './memory.ts';
+import { registerNoteCompletion } from './noteCompletion.ts';
+import { Pages } from './pages.ts';
+import { Problems } from './problems.ts';
+import type { Services } from './services.ts';
+import { Status } from './status.ts';
+
+/** What other extensions and the in-host tests see. */
+export interface Api {
+  /** Milliseconds that activation took. */
+  readonly activation: number;
+  /** Ends the engine in the middle of whatever it is doing, as a crash would. */
+  readonly endEngine: () => void;
+}
+
+export function activateWith(context: vscode.ExtensionContext, start: ClientOptions['start']): Api {
+  const began = performance.now();
+  const log = new Log();
+  const status = new Status();
+  let kill: () => void = () => undefined;
+  const client = createEngineClient({
+    start: async (events) => {
+      const handle = await start(events);
+      kill = () => {
+        handle.end();
+        events.died('ended on request');
+      };
+      return handle;
+    },
+    readFile: (name) => readBundled(context.extensionUri, name),
+    log: (line) => log.info(line),
+  });
+  const memory = new Memory(context.workspaceState);
+  const services: Services = { context, client, consultant: new Consultant(client, memory), memory, status, log };
+  const problems = new Problems(services);
+  const pages = new Pages(services);
+  context.subscriptions.push(
+    log,
+    status,
+    problems,
+    pages,
+    { dispose: () => client.dispose() },
+    registerHover(services),
+    registerActions(services, problems),
+    registerHints(services),
+    registerNoteCompletion(),
+    registerEquationLinks(),
+    registerCommands({ services, pages, problems }),
+    vscode.window.onDidChangeActiveTextEditor(() => status.refresh()),
+  );
+  return { activation: performance.now() - began, endEngine: () => kill() };
+}
+
+/** Grammars and font faces beside the bundles, by plain name only. */
+async function readBundled(extension: vscode.Uri, name: string): Promise<Uint8Array | null> {
+  if (!/^[\w.-]+$/.test(name)) return null;
+  const folder = name.endsWith('.ttf') ? 'fonts' : 'grammars';
+  return vscode.workspace.fs.readFile(vscode.Uri.joinPath(extension, 'dist', folder, name));
+}

@@ -1,0 +1,161 @@
+/** The hover: what is expanded and why, one line of Unicode, a small table, the typeset formula, and links. */
+import * as vscode from 'vscode';
+import type { ExpandAnswer } from '../protocol.ts';
+import type { Place } from '../worker/desk/types.ts';
+import { type Consultation, selectionOf } from './consultant.ts';
+import { rangeOf } from './edits.ts';
+import { engineLanguage, isCode, SELECTOR } from './languages.ts';
+import { commandLink, escapeMarkdown, table } from './markdown.ts';
+import type { PlaceLink, Services } from './services.ts';
+import { settingsFor } from './settings.ts';
+import { limitText, plainSymbol, sourcesText } from './words.ts';
+
+const DEADLINE_MS = 300;
+const PICTURE_DEADLINE_MS = 150;
+const PICTURE_WIDTH = 480;
+const LONGEST_LINE = 600;
+
+const after = <T>(ms: number, value: T): Promise<T> => new Promise((resolve) => setTimeout(() => resolve(value), ms));
+
+export function registerHover(services: Services): vscode.Disposable {
+  return vscode.languages.registerHoverProvider(SELECTOR, {
+    provideHover: async (document, position, token) => {
+      const settings = settingsFor(document);
+      if (settings.hover === 'off') return null;
+      const selected = selectionAt(document, position);
+      if (!selected && isCode(engineLanguage(document)) && !mayHoldCall(document.lineAt(position.line).text)) return null;
+      const place = selected ?? selectionOf(document, new vscode.Range(position, position));
+      const consulting = services.consultant.consult(document, place, ['reading', 'reach'], {}, token);
+      const consultation = await Promise.race([consulting, after(DEADLINE_MS, null)]);
+      if (token.isCancellationRequested) return null;
+      if (!consultation) return new vscode.Hover(stillComputing(document, place));
+      return render(services, document, consultation, selected !== null, settings.hover === 'picture');
+    },
+  });
+}
+
+/** The active editor's selection, where it holds the position: a hover is told a position only. */
+function selectionAt(document: vscode.TextDocument, position: vscode.Position): Place | null {
+  const editor = vscode.window.activeTextEditor;
+  if (editor?.document !== document || editor.selection.isEmpty || !editor.selection.contains(position)) return null;
+  return selectionOf(document, editor.selection);
+}
+
+/** Cheap look before the engine is asked: a call or a quotient on the line. Plain arithmetic never opens a hover in code. */
+const mayHoldCall = (line: string): boolean => /[A-Za-z_]\w*\s*\(|\/|\*\*|\^/.test(line);
+
+function stillComputing(document: vscode.TextDocument, place: Place): vscode.MarkdownString {
+  const text = trusted();
+  text.appendMarkdown(`${escapeMarkdown(vscode.l10n.t('Still computing.'))} ${commandLink(vscode.l10n.t('Open the Expansion page'), 'leadingOrder.expandHere', [linkTo(document, place)])}`);
+  return text;
+}
+
+const COMMANDS = ['leadingOrder.expandHere', 'leadingOrder.setSmallQuantity', 'leadingOrder.oneTermMore', 'leadingOrder.applyProposal', 'leadingOrder.addNote'];
+function trusted(): vscode.MarkdownString {
+  const text = new vscode.MarkdownString();
+  text.isTrusted = { enabledCommands: COMMANDS };
+  return text;
+}
+const linkTo = (document: vscode.TextDocument, place: Place): PlaceLink => ({ uri: document.uri.toString(), version: document.version, start: place.start, end: place.end });
+
+async function render(services: Services, document: vscode.TextDocument, consultation: Consultation, selected: boolean, picture: boolean): Promise<vscode.Hover | null> {
+  const { answer, place } = consultation;
+  if (document.version !== consultation.version) return null;
+  if (!answer.ok) {
+    const quiet = answer.error.code === 'unreadable' || answer.error.code === 'unknown-function' || answer.error.code === 'bad-request';
+    if (!selected && (quiet || !place) && !(consultation.candidates.length > 1)) return null;
+    const text = trusted();
+    text.appendMarkdown(escapeMarkdown(answer.error.message));
+    const link = linkTo(document, place ?? consultation.selection);
+    const links = [consultation.candidates.length > 1 ? commandLink(vscode.l10n.t('Set the small quantity'), 'leadingOrder.setSmallQuantity', [link]) : '', commandLink(vscode.l10n.t('Open the Expansion page'), 'leadingOrder.expandHere', [link])];
+    text.appendMarkdown(`\n\n${links.filter(Boolean).join(' · ')}`);
+    return new vscode.Hover(text, place ? rangeOf(document, place.start, place.end) : undefined);
+  }
+  if (!selected && !consultation.worthwhile) return null;
+  const link = linkTo(document, place ?? consultation.selection);
+  const head = trusted();
+  head.appendMarkdown(`${headline(consultation, answer)} · ${commandLink(vscode.l10n.t('change'), 'leadingOrder.setSmallQuantity', [link])}`);
+  head.appendMarkdown(`\n\n${escapeMarkdown(answer.text.length > LONGEST_LINE ? `${answer.text.slice(0, LONGEST_LINE)} …` : answer.text)}`);
+  if (answer.left) head.appendMarkdown(`\n\n${escapeMarkdown(vscode.l10n.t('From the left: {0}', answer.left.text))}`);
+  head.appendMarkdown(`\n\n${figures(answer, consultation)}`);
+  const foot = trusted();
+  foot.appendMarkdown(links(link, answer));
+  const contents: vscode.MarkdownString[] = [head];
+  if (picture) {
+    const made = await Promise.race([drawn(services, answer), after(PICTURE_DEADLINE_MS, null)]);
+    if (made) contents.push(made);
+  }
+  if (document.version !== consultation.version) return null;
+  contents.push(foot);
+  return new vscode.Hover(contents, place ? rangeOf(document, place.start, place.end) : undefined);
+}
+
+function headline(consultation: Consultation, answer: ExpandAnswer): string {
+  const { reading } = answer;
+  const { asked, sources } = consultation;
+  const small = asked.small && asked.small.length > 0 ? vscode.l10n.t('small {0}', asked.small.map(plainSymbol).join(', ')) : null;
+  const limit = small ?? limitText(reading?.variableLatex ?? asked.variable ?? '', reading?.point ?? asked.point ?? '0', reading?.side ?? asked.side ?? 'both');
+  return `**${escapeMarkdown(limit)}** ${escapeMarkdown(`(${sourcesText(sources, small ? ['small'] : ['variable', 'point'])})`)}`;
+}
+
+/** One table: the remainder, its bound and the terms needed on the interval; without an interval how far 2, 3 and 4 terms reach. */
+function figures(answer: ExpandAnswer, { asked }: Consultation): string {
+  const rows: string[][] = [];
+  const order = answer.remainder ? answer.remainder.power : null;
+  if (answer.exact) rows.push([vscode.l10n.t('remainder'), vscode.l10n.t('none: the sum is exact')]);
+  if (asked.interval) {
+    const on = vscode.l10n.t('on [{0}, {1}]', asked.interval[0], asked.interval[1]);
+    if (answer.bound) rows.push([vscode.l10n.t('proven bound {0}', on), answer.bound.value ? `${answer.bound.value}${answer.bound.factor ? ` · ${answer.bound.factor}` : ''}` : vscode.l10n.t('none: unbounded at {0}', answer.bound.place ?? '?')]);
+    if (answer.needed) rows.push([vscode.l10n.t('terms needed for {0}', asked.tolerance ?? ''), neededText(answer)]);
+  }
+  const facts = rows.length > 0 ? table([vscode.l10n.t('terms'), String(answer.terms.length)], rows.map((row) => row.map(escapeMarkdown))) : '';
+  if (asked.interval || answer.exact || !answer.reach || answer.reach.length === 0) return facts;
+  const reach = table(
+    [vscode.l10n.t('terms'), ...answer.reach.map((row) => String(row.terms))],
+    [
+      [escapeMarkdown(vscode.l10n.t('error ≤ {0} proven up to a distance of', asked.tolerance ?? '')), ...answer.reach.map((row) => escapeMarkdown(row.distance ?? '–'))],
+      [escapeMarkdown(vscode.l10n.t('order left out')), ...answer.reach.map((row) => escapeMarkdown(row.order))],
+    ],
+  );
+  return [facts, order === null && facts === '' ? '' : '', reach].filter(Boolean).join('\n\n');
+}
+
+function neededText(answer: ExpandAnswer): string {
+  const { needed } = answer;
+  if (!needed) return '–';
+  if (needed.terms !== null) return needed.bound ? `${needed.terms} (${vscode.l10n.t('bound {0}', needed.bound)})` : String(needed.terms);
+  const reach = needed.reach ? ` ${vscode.l10n.t('It can be kept up to a distance of {0}.', needed.reach.distance)}` : '';
+  return `${vscode.l10n.t('no number of terms does: {0}', needed.reason ?? '')}${reach}`;
+}
+
+function links(link: PlaceLink, answer: ExpandAnswer): string {
+  return [
+    commandLink(vscode.l10n.t('Insert'), 'leadingOrder.applyProposal', [link, 'after']),
+    answer.exact ? '' : commandLink(vscode.l10n.t('one term more'), 'leadingOrder.oneTermMore', [link, answer.terms.length + 1]),
+    commandLink(vscode.l10n.t('Expansion page'), 'leadingOrder.expandHere', [link]),
+    commandLink(vscode.l10n.t('add a note'), 'leadingOrder.addNote', [link]),
+  ]
+    .filter(Boolean)
+    .join(' · ');
+}
+
+/** Ink by the kind of theme: an image cannot see the theme's colours. */
+function inkOf(kind: vscode.ColorThemeKind): string {
+  switch (kind) {
+    case vscode.ColorThemeKind.Light:
+      return '#1f1f1f';
+    case vscode.ColorThemeKind.HighContrast:
+      return '#ffffff';
+    case vscode.ColorThemeKind.HighContrastLight:
+      return '#292929';
+    default:
+      return '#cccccc';
+  }
+}
+
+async function drawn(services: Services, answer: ExpandAnswer): Promise<vscode.MarkdownString | null> {
+  const latex = answer.reading ? `${answer.reading.latex} = ${answer.latex}` : answer.latex;
+  const made = await services.client.consult({ desk: 'picture', latex, ink: inkOf(vscode.window.activeColorTheme.kind), width: PICTURE_WIDTH, size: 15 });
+  if (!('uri' in made) || made.uri === null) return null;
+  return new vscode.MarkdownString(`![${escapeMarkdown(answer.text).slice(0, 300)}](${made.uri})`);
+}

@@ -1,0 +1,328 @@
+/** One Expansion page: what it is about, what it shows, and what its buttons do. The view and the editor tab are both such pages. */
+import * as vscode from 'vscode';
+import type { Detail, ErrorAnswer, FitAnswer, GuardAnswer } from '../protocol.ts';
+import type { CodeControls, CopyKind, FromPage, HistoryEntry, Kept, Mode, PageState, Shown, ToPage } from '../webview/messages.ts';
+import type { Place, Proposal, Question, TextEdit } from '../worker/desk/types.ts';
+import { proposalTitle } from './actions.ts';
+import { type Consultation, selectionOf } from './consultant.ts';
+import { applyChecked, groundOf, rangeOf } from './edits.ts';
+import { engineLanguage, isCode, serves } from './languages.ts';
+import { requestCommand } from './requestCommand.ts';
+import type { Services } from './services.ts';
+import { settingsFor } from './settings.ts';
+import { shorten, sourceName } from './words.ts';
+
+const DETAILS: readonly Detail[] = ['reading', 'ladder', 'reach', 'plot'];
+const FOLLOW_PAUSE_MS = 250;
+const HISTORY_LENGTH = 12;
+/** Controls that hold for every expression; the others are about one. */
+const LASTING: readonly (keyof Question)[] = ['interval', 'tolerance', 'measure'];
+
+interface Focus {
+  readonly uri: vscode.Uri;
+  readonly place: Place;
+  readonly text: string;
+}
+interface Remembered extends HistoryEntry {
+  readonly focus: Focus;
+  readonly chosen: Question;
+}
+
+export class Page implements vscode.Disposable {
+  readonly #services: Services;
+  readonly #webview: vscode.Webview;
+  readonly #isVisible: () => boolean;
+  readonly #listeners: vscode.Disposable[] = [];
+  #focus: Focus | null = null;
+  #chosen: Question = {};
+  #mode: Mode = 'expand';
+  #controls: CodeControls = { from: '', to: '', tolerance: '1e-6', measure: 'relative', format: 'binary64', point: '0' };
+  #pinned = false;
+  #shown: Shown = { kind: 'nothing' };
+  #consultation: Consultation | null = null;
+  #proposals: readonly Proposal[] = [];
+  #history: readonly Remembered[] = [];
+  #stale: string | null = null;
+  #busy = 0;
+  #turn = 0;
+  #abort: AbortController | null = null;
+  #timer: ReturnType<typeof setTimeout> | undefined;
+
+  constructor(services: Services, webview: vscode.Webview, isVisible: () => boolean) {
+    this.#services = services;
+    this.#webview = webview;
+    this.#isVisible = isVisible;
+    this.#listeners.push(
+      webview.onDidReceiveMessage((message: FromPage) => void this.#receive(message).catch((error: unknown) => services.log.error('page', error))),
+      vscode.window.onDidChangeTextEditorSelection(({ textEditor }) => this.#follow(textEditor)),
+      vscode.workspace.onDidChangeTextDocument((event) => this.#textChanged(event)),
+    );
+  }
+
+  /** Turns the page to a place. A selection is taken exactly; a cursor finds the expression around it. */
+  async show(document: vscode.TextDocument, place: Place, mode: Mode = 'expand', chosen?: Question): Promise<void> {
+    const text = document.getText(rangeOf(document, place.start, place.end));
+    const same = this.#focus?.uri.toString() === document.uri.toString() && this.#focus.text === text && text !== '';
+    const lasting = Object.fromEntries(Object.entries(this.#chosen).filter(([key]) => LASTING.includes(key as keyof Question)));
+    this.#chosen = chosen ?? (same ? this.#chosen : lasting);
+    this.#focus = { uri: document.uri, place, text };
+    this.#mode = mode;
+    await this.#refresh();
+  }
+
+  async choose(question: Question): Promise<void> {
+    const merged: Record<string, unknown> = { ...this.#chosen, ...question };
+    for (const [key, value] of Object.entries(merged)) if (value === '' || value === null || value === undefined) delete merged[key];
+    if ('terms' in question) delete merged['order'];
+    this.#chosen = merged;
+    const document = this.#document();
+    if (document && (question.variable || question.point)) {
+      const settled = Object.fromEntries(Object.entries(question).filter(([key]) => ['variable', 'point', 'side'].includes(key)));
+      await this.#services.memory.remember(document.uri, settled);
+    }
+    await this.#refresh();
+  }
+
+  get kept(): Kept | null {
+    return this.#focus ? { uri: this.#focus.uri.toString(), start: this.#focus.place.start, end: this.#focus.place.end, mode: this.#mode, pinned: this.#pinned, chosen: this.#chosen } : null;
+  }
+
+  dispose(): void {
+    clearTimeout(this.#timer);
+    this.#abort?.abort();
+    for (const listener of this.#listeners) listener.dispose();
+  }
+
+  async #receive(message: FromPage): Promise<void> {
+    switch (message.kind) {
+      case 'ready':
+        this.#post();
+        if (!this.#focus) await this.#begin(message.kept);
+        return;
+      case 'choose':
+        return this.choose(message.question);
+      case 'mode':
+        this.#mode = message.mode;
+        return this.#refresh();
+      case 'code':
+        this.#controls = message.controls;
+        return this.#refresh();
+      case 'apply':
+        return this.#apply(message.index);
+      case 'copy':
+        return this.#copy(message.what);
+      case 'pin':
+        this.#pinned = message.pinned;
+        return this.#post();
+      case 'recall':
+        return this.#recall(message.index);
+      case 'reveal':
+        return this.#reveal();
+      case 'cancel':
+        this.#abort?.abort();
+        return undefined;
+    }
+  }
+
+  /** After a reload: what was kept; on first sight: the active editor. */
+  async #begin(kept: Kept | null): Promise<void> {
+    if (kept) {
+      const document = vscode.workspace.textDocuments.find((candidate) => candidate.uri.toString() === kept.uri);
+      if (document) {
+        this.#pinned = kept.pinned;
+        return this.show(document, { start: kept.start, end: kept.end }, kept.mode, kept.chosen);
+      }
+    }
+    const editor = vscode.window.activeTextEditor;
+    if (editor && serves(editor.document)) await this.show(editor.document, selectionOf(editor.document, editor.selection));
+  }
+
+  #follow(editor: vscode.TextEditor): void {
+    if (this.#pinned || this.#mode !== 'expand' || !this.#isVisible() || !serves(editor.document)) return;
+    clearTimeout(this.#timer);
+    this.#timer = setTimeout(() => void this.#followTo(editor).catch((error: unknown) => this.#services.log.error('page', error)), FOLLOW_PAUSE_MS);
+  }
+
+  /** Following the cursor never replaces a result by a complaint. */
+  async #followTo(editor: vscode.TextEditor): Promise<void> {
+    const { document } = editor;
+    const place = selectionOf(document, editor.selection);
+    const now = this.#consultation;
+    if (now?.place && now.uri === document.uri.toString() && now.version === document.version && editor.selection.isEmpty && now.place.start <= place.start && place.end <= now.place.end) return;
+    const tried = await this.#services.consultant.consult(document, place, DETAILS);
+    if (this.#pinned || document.version !== tried.version) return;
+    if (tried.answer.ok && (tried.worthwhile || !editor.selection.isEmpty)) await this.show(document, editor.selection.isEmpty ? (tried.place ?? place) : place);
+  }
+
+  #textChanged({ document, contentChanges }: vscode.TextDocumentChangeEvent): void {
+    const focus = this.#focus;
+    if (!focus || focus.uri.toString() !== document.uri.toString() || contentChanges.length === 0) return;
+    let { start, end } = focus.place;
+    let touched = false;
+    for (const { rangeOffset, rangeLength, text } of contentChanges) {
+      if (rangeOffset + rangeLength <= start) {
+        start += text.length - rangeLength;
+        end += text.length - rangeLength;
+      } else if (rangeOffset < end) touched = true;
+    }
+    if (touched || document.getText(rangeOf(document, start, end)) !== focus.text) {
+      this.#stale = vscode.l10n.t('The text has changed since.');
+      this.#proposals = [];
+      this.#post();
+      return;
+    }
+    this.#focus = { ...focus, place: { start, end } };
+    clearTimeout(this.#timer);
+    this.#timer = setTimeout(() => void this.#refresh().catch((error: unknown) => this.#services.log.error('page', error)), FOLLOW_PAUSE_MS);
+  }
+
+  async #refresh(): Promise<void> {
+    const document = this.#document();
+    const focus = this.#focus;
+    if (!document || !focus) return this.#post();
+    this.#turn += 1;
+    const turn = this.#turn;
+    this.#busy += 1;
+    this.#abort?.abort();
+    this.#abort = new AbortController();
+    this.#post();
+    try {
+      if (this.#mode === 'expand') await this.#expand(document, focus, turn);
+      else await this.#computeCode(document, focus, turn, this.#abort.signal);
+    } finally {
+      this.#busy -= 1;
+      this.#post();
+    }
+  }
+
+  async #expand(document: vscode.TextDocument, focus: Focus, turn: number): Promise<void> {
+    const consultation = await this.#services.status.during(this.#services.consultant.consult(document, focus.place, DETAILS, this.#chosen));
+    const proposals = await this.#services.consultant.proposals(document, consultation);
+    if (turn !== this.#turn || document.version !== consultation.version) return;
+    const { answer, asked, sources, candidates } = consultation;
+    this.#consultation = consultation;
+    this.#stale = null;
+    this.#proposals = proposals;
+    if (!answer.ok) {
+      this.#shown = { kind: 'failure', message: answer.error.message, candidates, asked };
+      return;
+    }
+    if (consultation.place) this.#focus = { uri: document.uri, place: consultation.place, text: document.getText(rangeOf(document, consultation.place.start, consultation.place.end)) };
+    const origins = { variable: sourceName(sources.variable), point: sourceName(sources.point), interval: sourceName(sources.interval), tolerance: sourceName(sources.tolerance), terms: sourceName(sources.terms) };
+    this.#shown = { kind: 'expansion', answer, asked, sources, origins };
+    this.#remember(answer.text);
+  }
+
+  async #computeCode(document: vscode.TextDocument, focus: Focus, turn: number, signal: AbortSignal): Promise<void> {
+    const { version } = document;
+    const controls = this.#controls;
+    const mode = this.#mode === 'guard' ? 'guard' : 'fit';
+    const interval = controls.from !== '' && controls.to !== '' ? ([controls.from, controls.to] as const) : null;
+    let answer: FitAnswer | GuardAnswer | ErrorAnswer | null = null;
+    const language = engineLanguage(document);
+    const settings = settingsFor(document);
+    const common = { text: focus.text, language, format: controls.format, emit: language === 'plain' || !isCode(language) ? 'c' : language, budget_ms: settings.budget } as const;
+    const variable = this.#chosen.variable ?? this.#services.memory.recall(document.uri).variable;
+    const named = variable === undefined ? {} : { variable };
+    if (mode === 'fit' && interval) {
+      answer = await this.#services.client.ask<FitAnswer>({ ask: 'fit', ...common, ...named, interval, tolerance: controls.tolerance, measure: controls.measure, form: settings.form }, signal);
+    } else if (mode === 'guard') {
+      answer = await this.#services.client.ask<GuardAnswer>({ ask: 'guard', ...common, ...named, point: controls.point || '0', ...(interval ? { interval } : {}) }, signal);
+    }
+    if (turn !== this.#turn || document.version !== version) return;
+    this.#stale = null;
+    this.#consultation = null;
+    this.#shown = mode === 'fit' ? { kind: 'fit', answer: answer as FitAnswer | ErrorAnswer | null, controls } : { kind: 'guard', answer: answer as GuardAnswer | ErrorAnswer | null, controls };
+    this.#proposals = answer?.ok ? [{ kind: 'replace', preview: firstLine(answer.code), edits: [{ ...focus.place, text: answer.code }] }] : [];
+  }
+
+  async #apply(index: number): Promise<void> {
+    const proposal = this.#proposals[index];
+    const document = this.#document();
+    if (!proposal || !document || !this.#focus) return;
+    const version = this.#consultation?.version ?? document.version;
+    const edits: readonly TextEdit[] = proposal.edits;
+    await applyChecked({ ...groundOf(document, [this.#focus.place, ...edits]), version }, edits);
+  }
+
+  async #copy(what: CopyKind): Promise<void> {
+    const shown = this.#shown;
+    const text =
+      shown.kind === 'expansion'
+        ? what === 'latex'
+          ? shown.answer.latex
+          : what === 'unicode'
+            ? shown.answer.text
+            : what === 'request'
+              ? requestCommand(this.#focus?.text ?? '', engineLanguageOf(this.#document()), shown.asked)
+              : shown.answer.numeric.sum
+        : (shown.kind === 'fit' || shown.kind === 'guard') && shown.answer?.ok
+          ? shown.answer.code
+          : null;
+    if (text === null) return;
+    await vscode.env.clipboard.writeText(text);
+    vscode.window.setStatusBarMessage(vscode.l10n.t('Copied: {0}', shorten(firstLine(text), 60)), 4000);
+  }
+
+  async #recall(index: number): Promise<void> {
+    const entry = this.#history[index];
+    if (!entry) return;
+    const document = vscode.workspace.textDocuments.find((candidate) => candidate.uri.toString() === entry.focus.uri.toString());
+    if (!document) return;
+    // The text may have moved: the same words nearest to the old place are meant.
+    const start = nearest(document.getText(), entry.focus.text, entry.focus.place.start);
+    if (start === null) return;
+    await this.show(document, { start, end: start + entry.focus.text.length }, 'expand', entry.chosen);
+  }
+
+  async #reveal(): Promise<void> {
+    const document = this.#document();
+    if (!document || !this.#focus) return;
+    const editor = await vscode.window.showTextDocument(document, { preserveFocus: false, ...columnOf(document) });
+    const range = rangeOf(document, this.#focus.place.start, this.#focus.place.end);
+    editor.selection = new vscode.Selection(range.start, range.end);
+    editor.revealRange(range, vscode.TextEditorRevealType.InCenterIfOutsideViewport);
+  }
+
+  #remember(label: string): void {
+    const focus = this.#focus;
+    if (!focus || focus.text === '') return;
+    const entry: Remembered = { label: shorten(focus.text.replace(/\s+/g, ' '), 80), detail: shorten(label, 120), focus, chosen: this.#chosen };
+    this.#history = [entry, ...this.#history.filter((old) => old.label !== entry.label || old.focus.uri.toString() !== focus.uri.toString())].slice(0, HISTORY_LENGTH);
+  }
+
+  #document(): vscode.TextDocument | null {
+    const uri = this.#focus?.uri.toString();
+    return vscode.workspace.textDocuments.find((candidate) => candidate.uri.toString() === uri && !candidate.isClosed) ?? null;
+  }
+
+  #post(): void {
+    const document = this.#document();
+    const line = document && this.#focus ? document.positionAt(this.#focus.place.start).line + 1 : 0;
+    const state: PageState = {
+      shown: this.#shown,
+      busy: this.#busy > 0,
+      place: document ? `${document.uri.path.split('/').at(-1) ?? ''}:${line}` : '',
+      code: document ? isCode(engineLanguage(document)) : false,
+      pinned: this.#pinned,
+      stale: this.#stale,
+      actions: this.#proposals.map((proposal) => ({ label: proposalTitle(proposal) })),
+      history: this.#history.slice(1).map(({ label, detail }) => ({ label, detail })),
+    };
+    const message: ToPage = { kind: 'state', state, kept: this.kept };
+    void this.#webview.postMessage(message);
+  }
+}
+
+const firstLine = (text: string): string => text.split('\n').find((line) => line.trim() !== '')?.trim() ?? '';
+const engineLanguageOf = (document: vscode.TextDocument | null): string => (document ? engineLanguage(document) : 'plain');
+const columnOf = (document: vscode.TextDocument): { viewColumn?: vscode.ViewColumn } => {
+  const column = vscode.window.visibleTextEditors.find((editor) => editor.document === document)?.viewColumn;
+  return column === undefined ? {} : { viewColumn: column };
+};
+
+export function nearest(text: string, wanted: string, around: number): number | null {
+  let best: number | null = null;
+  for (let at = text.indexOf(wanted); at >= 0; at = text.indexOf(wanted, at + 1)) if (best === null || Math.abs(at - around) < Math.abs(best - around)) best = at;
+  return best;
+}

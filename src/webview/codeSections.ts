@@ -1,0 +1,64 @@
+/** The forms for programs: a polynomial in place of a call, and a guarded form of what cancels. */
+import { codeControls } from './controls.ts';
+import { type Child, h } from './dom.ts';
+import { t } from './language.ts';
+import type { CodeControls, Shown } from './messages.ts';
+
+type Fitted = Extract<Shown, { readonly kind: 'fit' }>;
+type Guarded = Extract<Shown, { readonly kind: 'guard' }>;
+
+export function fitSection(shown: Fitted, settle: (controls: CodeControls) => void): Child[] {
+  const { answer } = shown;
+  const controls = codeControls('fit', shown.controls, settle);
+  if (!answer) return [controls];
+  if (!answer.ok) return [controls, complaint(answer.error.message)];
+  const { bound } = answer;
+  const parts: readonly (readonly [string, string])[] = [
+    [t('approximation'), bound.approximation],
+    [t('rounding'), bound.rounding],
+    [t('evaluation'), bound.evaluation],
+  ];
+  return [
+    controls,
+    h(
+      'div',
+      { class: 'facts', 'aria-live': 'polite' },
+      h('p', {}, t('degree', answer.degree), answer.taylorDegree !== null && h('span', { class: 'muted' }, `; ${t('taylor', answer.taylorDegree)}`)),
+      answer.operations && h('p', { class: 'muted' }, t('operations', answer.operations.multiplications, answer.operations.additions)),
+    ),
+    h('section', {}, h('h2', {}, `${t('bound')} (${bound.measure})`), h('table', { class: 'figures' }, h('tbody', {}, ...parts.map(([name, value]) => h('tr', {}, h('th', { scope: 'row' }, name), h('td', {}, value))), h('tr', { class: 'total' }, h('th', { scope: 'row' }, t('total')), h('td', {}, bound.total)))), h('p', { class: 'muted' }, bound.method)),
+    code(answer.code),
+    h(
+      'details',
+      {},
+      h('summary', {}, t('coefficients')),
+      h('table', { class: 'figures' }, h('thead', {}, h('tr', {}, h('th', { scope: 'col' }, t('power')), h('th', { scope: 'col' }, t('value')), h('th', { scope: 'col' }, t('hex')))), h('tbody', {}, ...answer.coefficients.map((c) => h('tr', {}, h('th', { scope: 'row' }, String(c.power)), h('td', {}, c.value), h('td', {}, c.hex))))),
+    ),
+    assumptions(answer.assumptions ?? []),
+  ];
+}
+
+export function guardSection(shown: Guarded, settle: (controls: CodeControls) => void): Child[] {
+  const { answer } = shown;
+  const controls = codeControls('guard', shown.controls, settle);
+  if (!answer) return [controls];
+  if (!answer.ok) return [controls, complaint(answer.error.message)];
+  return [
+    controls,
+    h('div', { class: 'facts', 'aria-live': 'polite' }, h('p', {}, h('span', { class: 'muted' }, `${t('worst')} `), h('strong', {}, answer.bound.whole)), answer.switch !== null && h('p', {}, t('switch', answer.switch))),
+    answer.ranges.length > 0 &&
+      h(
+        'section',
+        {},
+        h('h2', {}, t('ranges')),
+        h('table', { class: 'figures' }, h('thead', {}, h('tr', {}, ...[t('from'), t('to'), t('form'), t('worst')].map((name) => h('th', { scope: 'col' }, name)))), h('tbody', {}, ...answer.ranges.map((range) => h('tr', {}, h('td', {}, range.from), h('td', {}, range.to), h('td', {}, h('code', {}, range.form)), h('td', {}, range.bound))))),
+      ),
+    answer.forms.length > 0 && h('section', {}, h('h2', {}, t('forms')), h('table', { class: 'figures' }, h('tbody', {}, ...answer.forms.map((form) => h('tr', {}, h('td', {}, h('code', {}, form.text)), h('td', {}, form.bound)))))),
+    code(answer.code),
+    assumptions(answer.assumptions),
+  ];
+}
+
+const complaint = (message: string): HTMLElement => h('p', { class: 'caution message', role: 'status' }, message);
+const code = (text: string): HTMLElement => h('section', {}, h('h2', {}, t('code')), h('pre', { tabindex: '0' }, h('code', {}, text)));
+const assumptions = (list: readonly string[]): Child => list.length > 0 && h('section', {}, h('h2', {}, t('assumptions')), h('ul', { class: 'plain' }, ...list.map((item) => h('li', {}, item))));

@@ -1,0 +1,99 @@
+/** What is shown of an expansion: formula, facts, ladder, plots, proof, assumptions. */
+import type { ExpandAnswer } from '../protocol.ts';
+import type { Question } from '../worker/desk/types.ts';
+import { expandControls } from './controls.ts';
+import { type Child, h } from './dom.ts';
+import { ladder } from './ladder.ts';
+import { t } from './language.ts';
+import { math } from './math.ts';
+import type { PageState, Shown } from './messages.ts';
+import { errorPlot, functionPlot } from './plot.ts';
+
+type Expanded = Extract<Shown, { readonly kind: 'expansion' }>;
+
+export function expansionSection(shown: Expanded, state: PageState, width: number, choose: (question: Question) => void): Child[] {
+  const { answer, asked, origins } = shown;
+  const { reading } = answer;
+  return [
+    formula(answer),
+    expandControls(
+      {
+        asked,
+        origins,
+        variable: asked.variable ?? asked.small?.join(', ') ?? reading?.variable ?? '',
+        point: asked.point ?? reading?.point ?? '0',
+        candidates: reading?.candidates ?? [],
+        termCount: answer.terms.length,
+        code: state.code,
+      },
+      choose,
+    ),
+    facts(answer, asked),
+    ladder(answer, asked, choose),
+    plots(answer, asked, width),
+    ...details(answer),
+  ];
+}
+
+function formula(answer: ExpandAnswer): HTMLElement {
+  const left = answer.reading ? `${answer.reading.latex} ` : '';
+  return h('div', { class: 'formula', id: 'formula', tabindex: '0', role: 'group', 'aria-label': answer.text }, math(`${left}${left ? '= ' : ''}${answer.latex}`, true), answer.left && h('div', { class: 'other' }, h('span', { class: 'muted' }, t('left2')), math(answer.left.latex, true)));
+}
+
+function facts(answer: ExpandAnswer, asked: Question): HTMLElement {
+  const lines: Child[] = [];
+  const add = (text: Child, kind = ''): void => void lines.push(h('p', { class: kind || null }, text));
+  if (answer.exact) add(t('exact'), 'good');
+  if (answer.divergent) add(t('divergent'), 'caution');
+  if (answer.oscillating) add(t('oscillating'));
+  if (answer.bound) {
+    if (answer.bound.value === null) add(t('unbounded', answer.bound.place ?? '?'), 'caution');
+    else add([h('span', { class: 'muted' }, `${t('bound')} `), h('strong', { id: 'bound' }, answer.bound.value), answer.bound.factor ? [' · ', h('code', {}, answer.bound.factor)] : null]);
+  }
+  if (answer.needed) lines.push(...neededLines(answer, asked));
+  if (answer.at) add(`${t('at')} ${t('atRow', answer.at.argument, answer.at.function, answer.at.sum, answer.at.error)}`);
+  if (answer.radius) add(answer.radius.value === 'inf' ? t('entire') : t('radius', answer.radius.value), 'muted');
+  return h('div', { class: 'facts', 'aria-live': 'polite' }, lines);
+}
+
+function neededLines(answer: ExpandAnswer, asked: Question): Child[] {
+  const { needed } = answer;
+  if (!needed) return [];
+  const tolerance = asked.tolerance ?? '';
+  if (needed.terms !== null) {
+    const text = needed.terms === 1 ? t('neededOne', tolerance) : t('neededFor', needed.terms, tolerance);
+    const beside = [needed.bound ? `${t('bound')} ${needed.bound}` : '', needed.minimal ? t('neededMinimal') : ''].filter(Boolean).join('; ');
+    return [h('p', { class: 'good', id: 'needed' }, text, beside && h('span', { class: 'muted' }, ` (${beside})`))];
+  }
+  const more = [
+    needed.reach ? t('reachNone', needed.reach.distance) : '',
+    needed.best ? t('best', needed.best.terms, needed.best.bound) : '',
+    needed.fittedDegree !== undefined ? t('fitted', needed.fittedDegree) : '',
+  ].filter(Boolean);
+  return [h('p', { class: 'caution', id: 'needed' }, [t('neededNone', tolerance, needed.reason ?? ''), ...more].join(' '))];
+}
+
+function plots(answer: ExpandAnswer, asked: Question, width: number): HTMLElement | null {
+  const { plot } = answer;
+  if (!plot || plot.x.length < 2) return answer.exact ? null : h('p', { class: 'muted note' }, t('noPlot'));
+  return h('section', { class: 'plots' }, h('h2', {}, t('functionAndSum')), functionPlot(plot, answer.terms.length, width), h('h2', {}, t('errorPlot')), errorPlot(plot, answer, asked, width), h('p', { class: 'muted note' }, t('plotNote')));
+}
+
+function details(answer: ExpandAnswer): Child[] {
+  const proof = answer.bound?.proof ?? [];
+  const { bound } = answer;
+  return [
+    bound &&
+      h(
+        'details',
+        { id: 'proof' },
+        h('summary', {}, t('proof')),
+        h('p', {}, bound.method),
+        proof.length > 0 && h('ol', {}, ...proof.map((step) => h('li', {}, step))),
+        bound.lower !== null && h('p', { class: 'muted' }, t('lower', bound.lower)),
+      ),
+    answer.assumptions.length > 0 && h('section', {}, h('h2', {}, t('assumptions')), h('ul', { class: 'plain' }, ...answer.assumptions.map((assumption) => h('li', {}, h('code', {}, assumption))))),
+    answer.general && h('section', {}, h('h2', {}, t('general')), math(answer.general)),
+    answer.branches && answer.branches.length > 0 && h('section', {}, h('h2', {}, t('branches')), h('ol', {}, ...answer.branches.map((branch) => h('li', {}, math(branch.latex))))),
+  ];
+}

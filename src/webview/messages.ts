@@ -1,0 +1,69 @@
+/** What passes between the Expansion page and its host. Plain JSON both ways. */
+import type { ErrorAnswer, ExpandAnswer, FitAnswer, FitMeasure, GuardAnswer } from '../protocol.ts';
+import type { Question, Sources } from '../worker/desk/types.ts';
+
+export type Mode = 'expand' | 'fit' | 'guard';
+
+/** The controls of a polynomial or a guarded form, as typed. */
+export interface CodeControls {
+  readonly from: string;
+  readonly to: string;
+  readonly tolerance: string;
+  readonly measure: FitMeasure;
+  readonly format: string;
+  readonly point: string;
+}
+
+export type Shown =
+  | { readonly kind: 'nothing' }
+  | { readonly kind: 'failure'; readonly message: string; readonly candidates: readonly string[]; readonly asked: Question }
+  | { readonly kind: 'expansion'; readonly answer: ExpandAnswer; readonly asked: Question; readonly sources: Sources; readonly origins: Origins }
+  | { readonly kind: 'fit'; readonly answer: FitAnswer | ErrorAnswer | null; readonly controls: CodeControls }
+  | { readonly kind: 'guard'; readonly answer: GuardAnswer | ErrorAnswer | null; readonly controls: CodeControls };
+
+/** Where each control's value came from, in words. */
+export type Origins = Readonly<Partial<Record<'variable' | 'point' | 'interval' | 'tolerance' | 'terms', string>>>;
+
+export interface HistoryEntry {
+  readonly label: string;
+  readonly detail: string;
+}
+
+export interface PageState {
+  readonly shown: Shown;
+  readonly busy: boolean;
+  /** The file and line that the expression stands in; empty before the first. */
+  readonly place: string;
+  readonly code: boolean;
+  readonly pinned: boolean;
+  /** Says that the text has changed since; null while it has not. */
+  readonly stale: string | null;
+  readonly actions: readonly { readonly label: string }[];
+  readonly history: readonly HistoryEntry[];
+}
+
+/** What the editor keeps for a page across reloads. */
+export interface Kept {
+  readonly uri: string;
+  readonly start: number;
+  readonly end: number;
+  readonly mode: Mode;
+  readonly pinned: boolean;
+  readonly chosen: Question;
+}
+
+export type CopyKind = 'latex' | 'unicode' | 'code' | 'request';
+
+export type FromPage =
+  | { readonly kind: 'ready'; readonly kept: Kept | null }
+  | { readonly kind: 'choose'; readonly question: Question }
+  | { readonly kind: 'mode'; readonly mode: Mode }
+  | { readonly kind: 'code'; readonly controls: CodeControls }
+  | { readonly kind: 'apply'; readonly index: number }
+  | { readonly kind: 'copy'; readonly what: CopyKind }
+  | { readonly kind: 'pin'; readonly pinned: boolean }
+  | { readonly kind: 'recall'; readonly index: number }
+  | { readonly kind: 'reveal' }
+  | { readonly kind: 'cancel' };
+
+export type ToPage = { readonly kind: 'state'; readonly state: PageState; readonly kept: Kept | null };

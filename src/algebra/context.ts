@@ -1,0 +1,69 @@
+/** What the parts of one field share. */
+import type { Expression, Rational } from '../expression/index.ts';
+import { Declined, type Budget } from '../outcome.ts';
+import type { FunctionDescription } from '../functions/description.ts';
+import type { Kernel, KernelShape, KernelTable } from './kernel.ts';
+import { monomialOf, UNIT } from './monomial.ts';
+import type { Exponent } from './exponent.ts';
+import { addElements, elementFromMonomial, elementKey, negateElement } from './quotient.ts';
+import type { SignRules } from './signs.ts';
+import type { Element, Truth } from './types.ts';
+
+export interface Context {
+  readonly table: KernelTable;
+  readonly budget: Budget;
+  readonly signs: SignRules;
+  readonly describe: (id: string) => FunctionDescription | null | undefined;
+  readonly isZero: (a: Element) => Truth;
+  /** A tree as an element. */
+  readonly read: (e: Expression) => Element;
+  /** Whether the assumptions make the symbol an integer. */
+  readonly isInteger: (name: string) => boolean;
+}
+
+export const kernelElement = (ctx: Context, k: Kernel, exponent: Exponent = 1): Element => elementFromMonomial(ctx.table, monomialOf(k.index, exponent));
+
+export function parameterKernel(ctx: Context, name: string): Kernel {
+  return ctx.table.intern(`$${name}`, () => ({ shape: { kind: 'parameter', name } }));
+}
+export function constantKernel(ctx: Context, name: Extract<KernelShape, { kind: 'constant' }>['name']): Kernel {
+  return ctx.table.intern(`#${name}`, () => ({ shape: { kind: 'constant', name } }));
+}
+export function imaginaryKernel(ctx: Context): Kernel {
+  return ctx.table.intern('#i', () => ({
+    shape: { kind: 'imaginary' },
+    relation: { period: 2, value: [{ monomial: UNIT, coefficient: -1n }], pure: true, numeric: true },
+  }));
+}
+export function integerKernel(ctx: Context, value: bigint): Kernel {
+  return ctx.table.intern(`integer ${value}`, () => ({
+    shape: { kind: 'integer', value },
+    relation: { period: 1, value: [{ monomial: UNIT, coefficient: value }], pure: true, numeric: true },
+  }));
+}
+export const expKernel = (ctx: Context, unit: Element): Kernel => ctx.table.intern(`exp ${elementKey(unit)}`, () => ({ shape: { kind: 'exp', unit } }));
+export const powerKernel = (ctx: Context, base: Element, unit: Element): Kernel =>
+  ctx.table.intern(`power ${elementKey(base)} to ${elementKey(unit)}`, () => ({ shape: { kind: 'power', base, unit } }));
+export const logKernel = (ctx: Context, argument: Element): Kernel => ctx.table.intern(`log ${elementKey(argument)}`, () => ({ shape: { kind: 'log', argument } }));
+
+/** The call as a kernel; an equal argument seen before, though in another form, gives the same kernel. */
+export function callKernel(ctx: Context, id: string, args: readonly Element[]): Kernel {
+  const key = `${id}(${args.map(elementKey).join(', ')})`;
+  const known = ctx.table.find(key);
+  if (known) return known;
+  for (const k of ctx.table.kernels) {
+    if (k.shape.kind !== 'call' || k.shape.id !== id || k.shape.args.length !== args.length) continue;
+    const same = k.shape.args.every((x, i) => {
+      const y = args[i] as Element;
+      return elementKey(x) === elementKey(y) || ctx.isZero(minus(ctx, x, y)) === 'yes';
+    });
+    if (same) return k;
+  }
+  return ctx.table.intern(key, () => ({ shape: { kind: 'call', id, args } }));
+}
+
+export const minus = (ctx: Context, a: Element, b: Element): Element => addElements(ctx.table, a, negateElement(b));
+
+export const undecided = (message: string): Declined => new Declined('undecided', message);
+export const rationalOf = (a: Element): Rational | null => ('num' in a ? a : null);
+export const isZeroRational = (a: Element): boolean => 'num' in a && a.num === 0n;

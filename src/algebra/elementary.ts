@@ -1,0 +1,247 @@
+/** Elementary functions of field elements: special values, parity, shifts by quarter turns, compositions with inverses. */
+import { Q, type Rational } from '../expression/index.ts';
+import { callKernel, constantKernel, imaginaryKernel, isZeroRational, kernelElement, rationalOf, type Context } from './context.ts';
+import type { Kernel } from './kernel.ts';
+import { absolute, divideElements, exponential, logarithm, rationalPower } from './powers.ts';
+import { addElements, isQuotient, multiplyElements, negateElement, scaleElement } from './quotient.ts';
+import { isRealSet, NEGATIVE, NIL } from './signs.ts';
+import { byImaginaryUnit, multipleOfKernel, singleKernel, timesI } from './split.ts';
+import { cosineOfPi, sineOfPi } from './unitCircle.ts';
+import type { Element } from './types.ts';
+
+const plus = (ctx: Context, a: Element, b: Element): Element => addElements(ctx.table, a, b);
+const times = (ctx: Context, a: Element, b: Element): Element => multiplyElements(ctx.table, a, b);
+const pi = (ctx: Context): Element => kernelElement(ctx, constantKernel(ctx, 'pi'));
+const sqrt = (ctx: Context, a: Element): Element => rationalPower(ctx, a, Q.HALF);
+const squared = (ctx: Context, a: Element): Element => times(ctx, a, a);
+
+export const opaque = (ctx: Context, id: string, args: readonly Element[]): Element => kernelElement(ctx, callKernel(ctx, id, args));
+
+/** The sign that a canonical argument carries: that of its content. */
+const isNegativeForm = (a: Element): boolean => (isQuotient(a) ? a.content.num < 0n : a.num < 0n);
+
+/** The argument x where a is the kernel `id`(x), else null. */
+function argumentOf(ctx: Context, a: Element, id: string): Element | null {
+  const single = singleKernel(a);
+  if (!single || single.exponent !== 1) return null;
+  const { shape } = ctx.table.kernels[single.kernel] as Kernel;
+  return shape.kind === 'call' && shape.id === id ? (shape.args[0] ?? null) : null;
+}
+
+/** i*b with b real, b; else null. */
+function imaginaryArgument(ctx: Context, a: Element): Element | null {
+  if (!isQuotient(a) || !a.monomial.kernels.includes(imaginaryKernel(ctx).index)) return null;
+  const { re, im } = byImaginaryUnit(ctx, a);
+  return isZeroRational(re) ? im : null;
+}
+
+function sine(ctx: Context, a: Element): Element {
+  if (isZeroRational(a)) return Q.ZERO;
+  if (isNegativeForm(a)) return negateElement(sine(ctx, negateElement(a)));
+  const b = imaginaryArgument(ctx, a);
+  if (b) return timesI(ctx, hyperbolicSine(ctx, b));
+  const { coefficient, rest } = multipleOfKernel(ctx, a, constantKernel(ctx, 'pi').index);
+  if (isZeroRational(rest)) return sineOfPi(ctx, coefficient);
+  const quarters = quarterTurns(coefficient);
+  if (quarters !== null && quarters !== 0) {
+    const inner = quarters % 2 === 0 ? sine(ctx, rest) : cosine(ctx, rest);
+    return quarters >= 2 ? negateElement(inner) : inner;
+  }
+  const y = argumentOf(ctx, a, 'asin');
+  if (y) return y;
+  const c = argumentOf(ctx, a, 'acos');
+  if (c) return sqrt(ctx, plus(ctx, Q.ONE, negateElement(squared(ctx, c))));
+  const t = argumentOf(ctx, a, 'atan');
+  if (t) return divideElements(ctx, t, sqrt(ctx, plus(ctx, Q.ONE, squared(ctx, t))));
+  return opaque(ctx, 'sin', [a]);
+}
+
+function cosine(ctx: Context, a: Element): Element {
+  if (isZeroRational(a)) return Q.ONE;
+  if (isNegativeForm(a)) return cosine(ctx, negateElement(a));
+  const b = imaginaryArgument(ctx, a);
+  if (b) return hyperbolicCosine(ctx, b);
+  const { coefficient, rest } = multipleOfKernel(ctx, a, constantKernel(ctx, 'pi').index);
+  if (isZeroRational(rest)) return cosineOfPi(ctx, coefficient);
+  const quarters = quarterTurns(coefficient);
+  if (quarters !== null && quarters !== 0) {
+    const inner = quarters % 2 === 0 ? cosine(ctx, rest) : sine(ctx, rest);
+    return quarters === 1 || quarters === 2 ? negateElement(inner) : inner;
+  }
+  const y = argumentOf(ctx, a, 'acos');
+  if (y) return y;
+  const s = argumentOf(ctx, a, 'asin');
+  if (s) return sqrt(ctx, plus(ctx, Q.ONE, negateElement(squared(ctx, s))));
+  const t = argumentOf(ctx, a, 'atan');
+  if (t) return divideElements(ctx, Q.ONE, sqrt(ctx, plus(ctx, Q.ONE, squared(ctx, t))));
+  return opaque(ctx, 'cos', [a]);
+}
+
+/** 2q modulo 4 where q is a multiple of 1/2, else null: how many quarter turns pi*q is. */
+function quarterTurns(q: Rational): number | null {
+  if (q.den > 2n) return null;
+  const doubled = q.den === 1n ? q.num * 2n : q.num;
+  return Number(((doubled % 4n) + 4n) % 4n);
+}
+
+function hyperbolicSine(ctx: Context, a: Element): Element {
+  if (isZeroRational(a)) return Q.ZERO;
+  if (isNegativeForm(a)) return negateElement(hyperbolicSine(ctx, negateElement(a)));
+  const b = imaginaryArgument(ctx, a);
+  if (b) return timesI(ctx, sine(ctx, b));
+  const y = argumentOf(ctx, a, 'asinh');
+  if (y) return y;
+  if (isLogarithmic(ctx, a)) return scaleElement(plus(ctx, exponential(ctx, a), negateElement(exponential(ctx, negateElement(a)))), Q.HALF);
+  const c = argumentOf(ctx, a, 'acosh');
+  if (c) return times(ctx, sqrt(ctx, plus(ctx, c, Q.MINUS_ONE)), sqrt(ctx, plus(ctx, c, Q.ONE)));
+  return opaque(ctx, 'sinh', [a]);
+}
+function hyperbolicCosine(ctx: Context, a: Element): Element {
+  if (isZeroRational(a)) return Q.ONE;
+  if (isNegativeForm(a)) return hyperbolicCosine(ctx, negateElement(a));
+  const b = imaginaryArgument(ctx, a);
+  if (b) return cosine(ctx, b);
+  const y = argumentOf(ctx, a, 'acosh');
+  if (y) return y;
+  if (isLogarithmic(ctx, a)) return scaleElement(plus(ctx, exponential(ctx, a), exponential(ctx, negateElement(a))), Q.HALF);
+  const s = argumentOf(ctx, a, 'asinh');
+  if (s) return sqrt(ctx, plus(ctx, Q.ONE, squared(ctx, s)));
+  return opaque(ctx, 'cosh', [a]);
+}
+
+/** Whether a is a sum of rational multiples of logarithms, so that exp(a) is algebraic. */
+function isLogarithmic(ctx: Context, a: Element): boolean {
+  if (!isQuotient(a) || a.denominator.length > 0) return false;
+  return a.numerator.every((t) => {
+    const kernels = [...t.monomial.kernels, ...a.monomial.kernels];
+    const shape = kernels.length === 1 ? ctx.table.kernels[kernels[0] as number]?.shape : undefined;
+    return shape?.kind === 'log' && [...t.monomial.exponents, ...a.monomial.exponents].every((e) => e === 1);
+  });
+}
+
+/** Angles in (0, 1/2) whose sine or tangent a person knows; the table of values is computed, not stored. */
+const KNOWN_DENOMINATORS = [3, 4, 5, 6, 8, 10, 12] as const;
+
+function angleWith(ctx: Context, value: Element, f: (r: Rational) => Element): Rational | null {
+  for (const den of KNOWN_DENOMINATORS) {
+    for (let num = 1; num * 2 < den; num += 1) {
+      const r = Q.rational(num, den);
+      if (Number(r.den) === den && isZeroRational(plus(ctx, f(r), negateElement(value)))) return r;
+    }
+  }
+  return null;
+}
+/** Only algebraic numbers can be sines of rational angles. */
+const isNumericAlgebraic = (ctx: Context, a: Element): boolean =>
+  isQuotient(a) && a.denominator.length === 0 && [...a.monomial.kernels, ...a.numerator.flatMap((t) => t.monomial.kernels)].every((k) => ctx.table.relations[k]?.numeric === true);
+
+function arcSine(ctx: Context, a: Element): Element {
+  if (isZeroRational(a)) return Q.ZERO;
+  const r = rationalOf(a);
+  if (r && Q.isOne(r)) return scaleElement(pi(ctx), Q.HALF);
+  if (r && Q.equal(r, Q.HALF)) return scaleElement(pi(ctx), Q.rational(1, 6));
+  if (isNumericAlgebraic(ctx, a)) {
+    const angle = angleWith(ctx, a, (q) => sineOfPi(ctx, q));
+    if (angle) return scaleElement(pi(ctx), angle);
+    const mirrored = angleWith(ctx, negateElement(a), (q) => sineOfPi(ctx, q));
+    if (mirrored) return scaleElement(pi(ctx), Q.negate(mirrored));
+  }
+  if (isNegativeForm(a)) return negateElement(arcSine(ctx, negateElement(a)));
+  return opaque(ctx, 'asin', [a]);
+}
+function arcCosine(ctx: Context, a: Element): Element {
+  const sine = arcSine(ctx, a);
+  const half = scaleElement(pi(ctx), Q.HALF);
+  const { coefficient, rest } = multipleOfKernel(ctx, sine, constantKernel(ctx, 'pi').index);
+  if (isZeroRational(rest)) return plus(ctx, half, scaleElement(pi(ctx), Q.negate(coefficient)));
+  return opaque(ctx, 'acos', [a]);
+}
+function arcTangent(ctx: Context, a: Element): Element {
+  if (isZeroRational(a)) return Q.ZERO;
+  const r = rationalOf(a);
+  if (r && Q.isOne(r)) return scaleElement(pi(ctx), Q.rational(1, 4));
+  if (isNumericAlgebraic(ctx, a)) {
+    const tangent = (q: Rational): Element => divideElements(ctx, sineOfPi(ctx, q), cosineOfPi(ctx, q));
+    const angle = angleWith(ctx, a, tangent);
+    if (angle) return scaleElement(pi(ctx), angle);
+    const mirrored = angleWith(ctx, negateElement(a), tangent);
+    if (mirrored) return scaleElement(pi(ctx), Q.negate(mirrored));
+  }
+  if (isNegativeForm(a)) return negateElement(arcTangent(ctx, negateElement(a)));
+  return opaque(ctx, 'atan', [a]);
+}
+
+/** Inverse hyperbolic functions of numbers are logarithms; of anything else they stay as written. */
+const isNumber = (ctx: Context, a: Element): boolean => rationalOf(a) !== null || isNumericAlgebraic(ctx, a);
+function arcHyperbolicSine(ctx: Context, a: Element): Element {
+  if (isZeroRational(a)) return Q.ZERO;
+  if (isNegativeForm(a)) return negateElement(arcHyperbolicSine(ctx, negateElement(a)));
+  if (isNumber(ctx, a)) return logarithm(ctx, plus(ctx, a, sqrt(ctx, plus(ctx, squared(ctx, a), Q.ONE))));
+  return opaque(ctx, 'asinh', [a]);
+}
+function arcHyperbolicCosine(ctx: Context, a: Element): Element {
+  const root = (shift: Rational): Element => sqrt(ctx, plus(ctx, a, shift));
+  if (isNumber(ctx, a)) return logarithm(ctx, plus(ctx, a, times(ctx, root(Q.MINUS_ONE), root(Q.ONE))));
+  return opaque(ctx, 'acosh', [a]);
+}
+function arcHyperbolicTangent(ctx: Context, a: Element): Element {
+  if (isZeroRational(a)) return Q.ZERO;
+  if (isNegativeForm(a)) return negateElement(arcHyperbolicTangent(ctx, negateElement(a)));
+  if (isNumber(ctx, a)) {
+    const log = (x: Element): Element => logarithm(ctx, plus(ctx, Q.ONE, x));
+    return scaleElement(plus(ctx, log(a), negateElement(log(negateElement(a)))), Q.HALF);
+  }
+  return opaque(ctx, 'atanh', [a]);
+}
+
+function signum(ctx: Context, a: Element): Element {
+  const s = ctx.signs.of(a);
+  if (s === NIL) return Q.ZERO;
+  if (s === 4) return Q.ONE;
+  if (s === NEGATIVE) return Q.MINUS_ONE;
+  if (isRealSet(s)) {
+    const size = absolute(ctx, a);
+    // sign(a) = |a|/a away from the zeros of a.
+    return divideElements(ctx, size, a);
+  }
+  return opaque(ctx, 'sign', [a]);
+}
+
+const reciprocal = (ctx: Context, a: Element): Element => divideElements(ctx, Q.ONE, a);
+
+type Rule = (ctx: Context, args: readonly [Element, ...Element[]]) => Element;
+
+/** What the field itself knows. Functions that are not here come from their descriptions, or stay kernels. */
+export const ELEMENTARY_RULES: Readonly<Record<string, Rule>> = {
+  exp: (ctx, [a]) => exponential(ctx, a),
+  log: (ctx, [a, b]) => (b ? divideElements(ctx, logarithm(ctx, a), logarithm(ctx, b)) : logarithm(ctx, a)),
+  sqrt: (ctx, [a]) => sqrt(ctx, a),
+  sin: (ctx, [a]) => sine(ctx, a),
+  cos: (ctx, [a]) => cosine(ctx, a),
+  tan: (ctx, [a]) => divideElements(ctx, sine(ctx, a), cosine(ctx, a)),
+  cot: (ctx, [a]) => divideElements(ctx, cosine(ctx, a), sine(ctx, a)),
+  sec: (ctx, [a]) => reciprocal(ctx, cosine(ctx, a)),
+  csc: (ctx, [a]) => reciprocal(ctx, sine(ctx, a)),
+  sinh: (ctx, [a]) => hyperbolicSine(ctx, a),
+  cosh: (ctx, [a]) => hyperbolicCosine(ctx, a),
+  tanh: (ctx, [a]) => divideElements(ctx, hyperbolicSine(ctx, a), hyperbolicCosine(ctx, a)),
+  coth: (ctx, [a]) => divideElements(ctx, hyperbolicCosine(ctx, a), hyperbolicSine(ctx, a)),
+  sech: (ctx, [a]) => reciprocal(ctx, hyperbolicCosine(ctx, a)),
+  csch: (ctx, [a]) => reciprocal(ctx, hyperbolicSine(ctx, a)),
+  asin: (ctx, [a]) => arcSine(ctx, a),
+  acos: (ctx, [a]) => arcCosine(ctx, a),
+  atan: (ctx, [a]) => arcTangent(ctx, a),
+  asinh: (ctx, [a]) => arcHyperbolicSine(ctx, a),
+  acosh: (ctx, [a]) => arcHyperbolicCosine(ctx, a),
+  atanh: (ctx, [a]) => arcHyperbolicTangent(ctx, a),
+  abs: (ctx, [a]) => modulus(ctx, a),
+  sign: (ctx, [a]) => signum(ctx, a),
+};
+
+/** |a|, for complex a as sqrt(re^2 + im^2) where both parts are known to be real. */
+function modulus(ctx: Context, a: Element): Element {
+  if (isRealSet(ctx.signs.of(a))) return absolute(ctx, a);
+  const { re, im } = byImaginaryUnit(ctx, a);
+  if (!isZeroRational(im) && isRealSet(ctx.signs.of(re)) && isRealSet(ctx.signs.of(im))) return sqrt(ctx, plus(ctx, squared(ctx, re), squared(ctx, im)));
+  return absolute(ctx, a);
+}

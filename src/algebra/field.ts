@@ -1,0 +1,147 @@
+/** The coefficient field of one request: everything of the room behind one interface. */
+import { Q, type Assumption, type Expression, type Rational } from '../expression/index.ts';
+import { describe as describeFunction, type FunctionDescription } from '../functions/index.ts';
+import type { Budget } from '../outcome.ts';
+import { createAssumptionStore } from './assumptions.ts';
+import { imaginaryKernel, kernelElement, minus, rationalOf, type Context } from './context.ts';
+import { deepZero } from './deepZero.ts';
+import { callFunction } from './functions.ts';
+import { fromExpression } from './fromExpression.ts';
+import { createKernelTable, type Kernel } from './kernel.ts';
+import { divideElements, exponential, generalPower, logarithm } from './powers.ts';
+import { addElements, elementKey, isQuotient, kernelsOf, multiplyElements, negateElement } from './quotient.ts';
+import { createSignRules, isRealSet, NEGATIVE, NIL, NOT_REAL, POSITIVE, REAL, ANY, type SignSet } from './signs.ts';
+import { byImaginaryUnit } from './split.ts';
+import { toExpression } from './toExpression.ts';
+import type { Element, Field, Sign, Truth } from './types.ts';
+import { allKernels, createZeroTest, signOfBall } from './zero.ts';
+import { complex } from '../rigorous/index.ts';
+
+const SIGN_PRECISIONS = [64, 192, 640, 2000] as const;
+
+/**
+ * The field under the given assumptions. Symbols are real unless an assumption says otherwise. `describe` finds function descriptions (default: the registry).
+ * Rational operations cost about one Rational operation; monomials a merge of exponent lists.
+ */
+export function createField(assumptions: readonly Assumption[], budget: Budget, describe: (id: string) => FunctionDescription | null | undefined = describeFunction): Field {
+  const table = createKernelTable(() => budget.check());
+  const facts = createAssumptionStore(table);
+  const needed = new Set<string>();
+  const zero = createZeroTest(table, describe, facts, (a) => deepZero(ctx, a));
+  const signs = createSignRules(table, facts, (k) => signOfOpaque(k));
+  const ctx: Context = { table, budget, signs, describe, isZero: (a) => zero.isZero(a), isInteger: (name) => facts.isInteger(name), read: (e) => fromExpression(ctx, e) };
+
+  /** log and call kernels: by balls where they are constants, by their arguments' signs where a rule is known. */
+  function signOfOpaque(k: Kernel): SignSet {
+    const a = kernelElement(ctx, k);
+    if (isConstant(a)) return constantSign(a);
+    const { shape } = k;
+    if (shape.kind === 'log') {
+      const inner = signs.of(shape.argument);
+      if (inner !== POSITIVE && inner !== (POSITIVE | NIL)) return ANY;
+      const above = signs.of(minus(ctx, shape.argument, Q.ONE));
+      return isRealSet(above) ? above : REAL;
+    }
+    if (shape.kind === 'call' && shape.args.every((x) => isRealSet(signs.of(x)))) {
+      const [x] = shape.args;
+      if (!x) return ANY;
+      if (REAL_EVERYWHERE.has(shape.id)) return SIGN_OF_ARGUMENT.has(shape.id) ? signs.of(x) : shape.id === 'cosh' ? POSITIVE : REAL;
+      if ((shape.id === 'gamma' || shape.id === 'besselI' || shape.id === 'besselK') && shape.args.every((y) => signs.of(y) === POSITIVE)) return POSITIVE;
+    }
+    return ANY;
+  }
+
+  const isConstant = (a: Element): boolean => ![...allKernels(table, a)].some((k) => (table.kernels[k] as Kernel).shape.kind === 'parameter');
+
+  function constantSign(a: Element): SignSet {
+    for (const precision of SIGN_PRECISIONS) {
+      const z = zero.enclose(a, precision);
+      if (!z) continue;
+      if (!complex.isReal(z)) {
+        if (z.im.mid > z.im.rad || -z.im.mid > z.im.rad) return NOT_REAL;
+        continue;
+      }
+      const s = signOfBall(z);
+      if (s !== null) return s > 0 ? POSITIVE : NEGATIVE;
+    }
+    return ANY;
+  }
+
+  function signSetOf(a: Element): SignSet {
+    const direct = signs.of(a);
+    if (direct === POSITIVE || direct === NEGATIVE || direct === NIL) return direct;
+    if (isQuotient(a) && isConstant(a)) {
+      if (zero.isZero(a) === 'yes') return NIL;
+      const byBall = constantSign(a);
+      if (byBall !== ANY) return byBall & direct || byBall;
+    }
+    return direct;
+  }
+
+  const field: Field = {
+    needed,
+    fromExpression: (e: Expression) => fromExpression(ctx, e),
+    toExpression: (a) => toExpression(ctx, a),
+    rational: (value) => (typeof value === 'object' ? value : Q.rational(value)),
+    i: kernelElement(ctx, imaginaryKernel(ctx)),
+    asRational: rationalOf,
+    add: (a, b) => addElements(table, a, b),
+    subtract: (a, b) => (isQuotient(b) ? addElements(table, a, negateElement(b)) : isQuotient(a) ? addElements(table, a, Q.negate(b)) : Q.subtract(a, b)),
+    negate: negateElement,
+    multiply: (a, b) => multiplyElements(table, a, b),
+    divide: (a, b) => divideElements(ctx, a, b),
+    power: (a, exponent) => generalPower(ctx, a, exponent),
+    exp: (a) => exponential(ctx, a),
+    log: (a) => logarithm(ctx, a),
+    call: (id, args) => callFunction(ctx, id, args),
+    isZero: (a) => zero.isZero(a),
+    sign(a): Sign {
+      const s = signSetOf(a);
+      if (s === POSITIVE || s === (POSITIVE | NIL)) return decided(1, s, a);
+      if (s === NEGATIVE || s === (NEGATIVE | NIL)) return decided(-1, s, a);
+      if (s === NIL) return 0;
+      return field.isReal(a) === 'no' ? 'complex' : 'undecided';
+    },
+    isReal(a): Truth {
+      const s = signSetOf(a);
+      if (isRealSet(s)) return 'yes';
+      if (s === NOT_REAL) return 'no';
+      const { re, im } = byImaginaryUnit(ctx, a);
+      if (!isRealSet(signs.of(re)) || !isRealSet(signs.of(im))) return 'undecided';
+      const zeroIm = zero.isZero(im);
+      return zeroIm === 'yes' ? 'yes' : zeroIm === 'no' ? 'no' : 'undecided';
+    },
+    equal: (a, b) => zero.isZero(field.subtract(a, b)),
+    compare(a, b): Sign {
+      if (!isQuotient(a) && !isQuotient(b)) return Q.compare(a as Rational, b as Rational);
+      return field.sign(field.subtract(a, b));
+    },
+    require: (assumption) => void needed.add(assumption),
+    parameters(a) {
+      return [...allKernels(table, a)]
+        .sort((x, y) => x - y)
+        .map((k) => (table.kernels[k] as Kernel).shape)
+        .flatMap((s) => (s.kind === 'parameter' ? [s.name] : []));
+    },
+    key: elementKey,
+  };
+
+  /** A sign that only zero could spoil: the parameters that must not vanish become part of the result. */
+  function decided(sign: 1 | -1, s: SignSet, a: Element): Sign {
+    if ((s & NIL) !== 0) {
+      if (isConstant(a)) return 'undecided';
+      for (const k of kernelsOf(a)) {
+        const { shape } = table.kernels[k] as Kernel;
+        if (shape.kind === 'parameter' && (facts.signOf(shape.name) & NIL) !== 0) needed.add(`${shape.name} != 0`);
+      }
+    }
+    return sign;
+  }
+
+  for (const a of assumptions) if (a.kind === 'domain') facts.setDomain(a.symbol, a.domain);
+  for (const a of assumptions) if (a.kind === 'relation') facts.note(field.subtract(field.fromExpression(a.left), field.fromExpression(a.right)), a.relation);
+  return field;
+}
+
+const REAL_EVERYWHERE: ReadonlySet<string> = new Set(['sin', 'cos', 'sinh', 'cosh', 'asinh', 'atan', 'erf', 'erfc']);
+const SIGN_OF_ARGUMENT: ReadonlySet<string> = new Set(['sinh', 'asinh', 'atan', 'erf']);

@@ -1,0 +1,142 @@
+/** The three-valued zero test: normal form, independence of kernels, balls at rising precision. */
+import { Q, type Rational } from '../expression/index.ts';
+import type { FunctionDescription } from '../functions/description.ts';
+import { complex, real, type ComplexBall } from '../rigorous/index.ts';
+import type { AssumptionStore } from './assumptions.ts';
+import { createEvaluator, type Evaluator } from './enclosure.ts';
+import type { Kernel, KernelTable } from './kernel.ts';
+import { elementKey, isQuotient, kernelsOf } from './quotient.ts';
+import { NEGATIVE, POSITIVE } from './signs.ts';
+import { isOnePolynomial } from './polynomial.ts';
+import type { Element, Truth } from './types.ts';
+
+export interface ZeroTest {
+  isZero(a: Element): Truth;
+  /** A ball around a at the given precision, parameters at sample number `sample`; null where none was found. */
+  enclose(a: Element, precision: number, sample?: number): ComplexBall | null;
+}
+
+const PRECISIONS = [64, 128, 320, 800, 2000] as const;
+/** Numerators and denominators of the values that parameters take, spread so that no small relation holds among them. */
+const SAMPLE_COUNT = 3;
+
+export function createZeroTest(table: KernelTable, describe: (id: string) => FunctionDescription | null | undefined, facts: AssumptionStore, deepZero: (a: Element) => boolean): ZeroTest {
+  const answers = new Map<string, Truth>();
+  const evaluators = new Map<string, Evaluator>();
+
+  const evaluator = (precision: number, sample: number): Evaluator => {
+    const key = `${precision} ${sample}`;
+    let known = evaluators.get(key);
+    if (!known) {
+      known = createEvaluator(table, describe, precision, (name) => sampleOf(facts, name, sample));
+      evaluators.set(key, known);
+    }
+    return known;
+  };
+
+  const test: ZeroTest = {
+    enclose: (a, precision, sample = 0) => evaluator(precision, sample).element(a),
+    isZero(a) {
+      if (!isQuotient(a)) return a.num === 0n ? 'yes' : 'no';
+      if (isOnePolynomial(a.numerator)) {
+        if (a.monomial.kernels.every((k) => neverIdenticallyZero(table.kernels[k] as Kernel))) return 'no';
+      } else {
+        const kernels = [...kernelsOf(a)].map((k) => table.kernels[k] as Kernel);
+        if (kernels.every(isIndependent) && a.monomial.kernels.every((k) => neverIdenticallyZero(table.kernels[k] as Kernel))) return 'no';
+      }
+      const key = elementKey(a);
+      const known = answers.get(key);
+      if (known) return known;
+      const answer = decide(a);
+      if (answers.size > 20000) answers.clear();
+      answers.set(key, answer);
+      return answer;
+    },
+  };
+
+  function decide(a: Element): Truth {
+    const parameters = [...allKernels(table, a)].some((k) => (table.kernels[k] as Kernel).shape.kind === 'parameter');
+    const samples = parameters ? SAMPLE_COUNT : 1;
+    let looksZero = false;
+    for (const precision of PRECISIONS) {
+      for (let sample = 0; sample < samples; sample += 1) {
+        const ball = test.enclose(a, precision, sample);
+        if (ball && !complex.containsZero(ball)) return 'no';
+        if (ball) looksZero = true;
+      }
+      // Small already at modest precision: a proof by normal form is more likely than a proof of the contrary.
+      if (precision === 128 && deepZero(a)) return 'yes';
+      if (!looksZero && precision >= 320) break;
+    }
+    return 'undecided';
+  }
+  return test;
+}
+
+/** Parameters, pi, radicals of integers and i are algebraically independent but for their relations, which the normal form applies. */
+const isIndependent = (k: Kernel): boolean =>
+  k.shape.kind === 'parameter' || k.shape.kind === 'integer' || k.shape.kind === 'imaginary' || (k.shape.kind === 'constant' && k.shape.name === 'pi');
+
+const neverIdenticallyZero = (k: Kernel): boolean => {
+  switch (k.shape.kind) {
+    case 'log':
+    case 'call':
+      return false;
+    default:
+      return true;
+  }
+};
+
+/** Kernels of the element and of all that they are built on. */
+export function allKernels(table: KernelTable, a: Element): ReadonlySet<number> {
+  const found = new Set<number>();
+  const open: Element[] = [a];
+  for (let x = open.pop(); x; x = open.pop()) {
+    for (const k of kernelsOf(x)) {
+      if (found.has(k)) continue;
+      found.add(k);
+      const { shape } = table.kernels[k] as Kernel;
+      if (shape.kind === 'radicand') open.push(shape.base);
+      else if (shape.kind === 'exp') open.push(shape.unit);
+      else if (shape.kind === 'power') open.push(shape.base, shape.unit);
+      else if (shape.kind === 'log' || shape.kind === 'abs') open.push(shape.argument);
+      else if (shape.kind === 'call') open.push(...shape.args);
+    }
+  }
+  return found;
+}
+
+/** A value of the parameter that its own assumptions allow; different for every name and sample. */
+function sampleOf(facts: AssumptionStore, name: string, sample: number): Rational | { readonly re: Rational; readonly im: Rational } {
+  let hash = 2166136261 ^ (sample * 40503);
+  for (let i = 0; i < name.length; i += 1) hash = Math.imul(hash ^ name.charCodeAt(i), 16777619) >>> 0;
+  hash >>>= 0;
+  const { lower, upper } = facts.boundsOf(name);
+  if (facts.isInteger(name)) {
+    const offset = BigInt(5 + (hash % 23));
+    if (lower && upper) {
+      const low = -Q.floor(Q.negate(lower));
+      const span = Q.floor(upper) - low + 1n;
+      return Q.rational(low + (span > 0n ? offset % span : 0n));
+    }
+    if (lower) return Q.rational(Q.floor(lower) + offset);
+    if (upper) return Q.rational(Q.floor(upper) - offset);
+    return Q.rational(offset);
+  }
+  const part = Q.rational(1 + (hash % 99991), 100003);
+  if (lower && upper) return Q.add(lower, Q.multiply(part, Q.subtract(upper, lower)));
+  const positive = Q.add(Q.rational(1, 3), Q.multiply(Q.rational(2), part));
+  if (lower) return Q.add(lower, positive);
+  if (upper) return Q.subtract(upper, positive);
+  if (facts.isComplex(name)) return { re: Q.subtract(positive, Q.ONE), im: Q.rational(1 + ((hash >>> 7) % 9973), 9901) };
+  const sign = facts.signOf(name);
+  if ((sign & (POSITIVE | NEGATIVE)) === NEGATIVE) return Q.negate(positive);
+  return sample === 1 && (sign & NEGATIVE) !== 0 ? Q.negate(positive) : positive;
+}
+
+/** The sign of a ball's real part, null while it contains zero or the ball is not real. */
+export function signOfBall(z: ComplexBall): -1 | 1 | null {
+  if (real.isPositive(z.re)) return 1;
+  if (real.isNegative(z.re)) return -1;
+  return null;
+}

@@ -1,6 +1,10 @@
 /** The gamma family. */
 import { build, type Expression, Q } from '../../expression/index.ts';
 import type { FunctionDescription } from '../description.ts';
+import { argument } from '../compose.ts';
+import { barnesGLocal, barnesGValue, logBarnesGDerivative, logBarnesGLocal } from './barnes.ts';
+import { explicitOrder, gammaLocal, gammaValue, logGammaLocal, logGammaValue, polygammaLocal, polygammaValue } from './gamma.ts';
+import { incompleteDerivative, lowerGammaLocal, lowerGammaValue, upperGammaLocal, upperGammaValue } from './incomplete.ts';
 import { gammaNames } from './names.ts';
 
 const { call, difference, negation, number, power, product, quotient, sum } = build;
@@ -8,14 +12,23 @@ const gamma = (e: Expression): Expression => call('gamma', e);
 const plusOne = (e: Expression): Expression => sum(e, number(1));
 
 export const gammaFunctions: readonly FunctionDescription[] = [
-  { id: 'gamma', title: 'Gamma function', arity: 1, names: gammaNames.gamma, derivative: ([x = number(0)]) => product(gamma(x), call('digamma', x)), domain: 'x is not 0, -1, -2, ...', source: 'DLMF 5.2.1' },
-  { id: 'logGamma', title: 'logarithm of the Gamma function', arity: 1, names: gammaNames.logGamma, derivative: ([x = number(0)]) => call('digamma', x), domain: 'x > 0', source: 'DLMF 5.2' },
-  { id: 'digamma', title: 'digamma function', arity: 1, names: gammaNames.digamma, derivative: ([x = number(0)]) => call('polygamma', number(1), x), domain: 'x is not 0, -1, -2, ...', source: 'DLMF 5.2.2' },
+  { id: 'gamma', title: 'Gamma function', arity: 1, names: gammaNames.gamma, local: gammaLocal, value: gammaValue, derivative: ([x = number(0)]) => product(gamma(x), call('digamma', x)), domain: 'x is not 0, -1, -2, ...', source: 'DLMF 5.2.1' },
+  { id: 'logGamma', title: 'logarithm of the Gamma function', arity: 1, names: gammaNames.logGamma, local: logGammaLocal, value: logGammaValue, derivative: ([x = number(0)]) => call('digamma', x), domain: 'x > 0', source: 'DLMF 5.2' },
+  { id: 'digamma', title: 'digamma function', arity: 1, names: gammaNames.digamma, local: (_args, _index, place) => polygammaLocal(0, place), value: (args) => polygammaValue(0, argument(args, 0)), derivative: ([x = number(0)]) => call('polygamma', number(1), x), domain: 'x is not 0, -1, -2, ...', source: 'DLMF 5.2.2' },
   {
     id: 'polygamma',
     title: 'polygamma function',
     arity: 2,
     names: gammaNames.polygamma,
+    local: (args, index, place) => {
+      const order = explicitOrder(args);
+      return order === null || index !== 1 ? null : polygammaLocal(order, place);
+    },
+    value: (args) => {
+      const order = explicitOrder(args);
+      if (order === null) return null;
+      return polygammaValue(order, argument(args, 1)) ?? (order === 0 ? call('digamma', argument(args, 1)) : null);
+    },
     derivative: ([n = number(0), x = number(0)], index) => (index === 1 ? call('polygamma', n.kind === 'number' ? number(Q.add(n.value, Q.ONE)) : plusOne(n), x) : null),
     domain: 'x is not 0, -1, -2, ...',
     source: 'DLMF 5.15.1',
@@ -40,12 +53,12 @@ export const gammaFunctions: readonly FunctionDescription[] = [
   { id: 'beta', title: 'beta function', arity: 2, names: gammaNames.beta, definition: ([a = number(0), b = number(0)]) => quotient(product(gamma(a), gamma(b)), gamma(sum(a, b))), source: 'DLMF 5.12.1' },
   { id: 'logBeta', title: 'logarithm of the beta function', arity: 2, names: gammaNames.logBeta, definition: ([a = number(0), b = number(0)]) => sum(call('logGamma', a), call('logGamma', b), negation(call('logGamma', sum(a, b)))) },
   { id: 'harmonic', title: 'harmonic number', arity: 1, names: gammaNames.harmonic, definition: ([n = number(0)]) => sum(call('digamma', plusOne(n)), build.constant('eulerGamma')), source: 'DLMF 5.4.14' },
-  { id: 'upperGamma', title: 'upper incomplete gamma function', arity: 2, names: gammaNames.upperGamma, source: 'DLMF 8.2.2' },
-  { id: 'lowerGamma', title: 'lower incomplete gamma function', arity: 2, names: gammaNames.lowerGamma, source: 'DLMF 8.2.1' },
+  { id: 'upperGamma', title: 'upper incomplete gamma function', arity: 2, names: gammaNames.upperGamma, local: upperGammaLocal, value: upperGammaValue, derivative: incompleteDerivative(-1), domain: 'x > 0', source: 'DLMF 8.2.2' },
+  { id: 'lowerGamma', title: 'lower incomplete gamma function', arity: 2, names: gammaNames.lowerGamma, local: lowerGammaLocal, value: lowerGammaValue, derivative: incompleteDerivative(1), domain: 'a > 0, x >= 0', source: 'DLMF 8.2.1' },
   { id: 'regularizedUpperGamma', title: 'regularised upper incomplete gamma function', arity: 2, names: gammaNames.regularizedUpperGamma, definition: ([a = number(0), x = number(0)]) => quotient(call('upperGamma', a, x), gamma(a)), source: 'DLMF 8.2.4' },
   { id: 'regularizedLowerGamma', title: 'regularised lower incomplete gamma function', arity: 2, names: gammaNames.regularizedLowerGamma, definition: ([a = number(0), x = number(0)]) => quotient(call('lowerGamma', a, x), gamma(a)), source: 'DLMF 8.2.4' },
-  { id: 'barnesG', title: 'Barnes G-function', arity: 1, names: gammaNames.barnesG, source: 'DLMF 5.17' },
-  { id: 'logBarnesG', title: 'logarithm of the Barnes G-function', arity: 1, names: gammaNames.logBarnesG, source: 'DLMF 5.17' },
-  { id: 'hyperfactorial', title: 'hyperfactorial', arity: 1, names: gammaNames.hyperfactorial, source: 'DLMF 5.17' },
+  { id: 'barnesG', title: 'Barnes G-function', arity: 1, names: gammaNames.barnesG, local: barnesGLocal, value: barnesGValue, derivative: (args) => product(call('barnesG', argument(args, 0)), logBarnesGDerivative(args)), source: 'DLMF 5.17' },
+  { id: 'logBarnesG', title: 'logarithm of the Barnes G-function', arity: 1, names: gammaNames.logBarnesG, local: logBarnesGLocal, derivative: logBarnesGDerivative, value: (args) => { const value = barnesGValue(args); return value && value.kind === 'number' && !Q.isZero(value.value) ? call('log', value) : null; }, domain: 'x > 0', source: 'DLMF 5.17' },
+  { id: 'hyperfactorial', title: 'hyperfactorial', arity: 1, names: gammaNames.hyperfactorial, definition: ([n = number(0)]) => call('exp', difference(product(n, call('logGamma', plusOne(n))), call('logBarnesG', plusOne(n)))), domain: 'x > -1', source: 'DLMF 5.17' },
   { id: 'superfactorial', title: 'superfactorial', arity: 1, names: gammaNames.superfactorial, definition: ([n = number(0)]) => call('barnesG', sum(n, number(2))) },
 ];

@@ -1,3 +1,13 @@
 /** Text -> expression, with source positions: LaTeX, Markdown, plain notation, code, notes. */
+import type { Expression } from '../expression/index.ts';
+import type { Outcome } from '../outcome.ts';
+import { readExpression, type ReadOptions } from './math/read.ts';
+
 export { type Formula, readExpression, readFormula, type ReadOptions } from './math/read.ts';
 export { collectMacros, type Macro, type MacroTable, NO_MACROS } from './math/macros.ts';
+export { type Assumption, type Property, rationalOf, readAssumption, readExact, readSmall, readVariable, type SmallQuantity } from './exact.ts';
+
+/** One LaTeX formula or chain of relations. Spans are UTF-16 offsets of `text`, also through macro expansion. */
+export const readLatex = (text: string, options: ReadOptions = {}): Outcome<Expression> => readExpression(text, 'latex', options);
+/** One formula in plain notation: `pi/2`, `sin x`, `x^2/2 + O(x^3)`, `√x`, `x²`. */
+export const readPlain = (text: string, options: ReadOptions = {}): Outcome<Expression> => readExpression(text, 'plain', options);

@@ -3,7 +3,7 @@ import { build, type Expression } from '../../expression/index.ts';
 import { bracketArguments, applyKnown, opensBracket } from './calls.ts';
 import { derivative, indexed, integral, limit } from './calculus.ts';
 import { isName } from './facts.ts';
-import { functionId } from './functionNames.ts';
+import { commandName, wordName } from './functionNames.ts';
 import { numberOf, relationOf } from './grammar.ts';
 import { name, order } from './names.ts';
 import { deeper, fail, isCommand, isMark, named, next, node, peek, type State, within } from './state.ts';
@@ -338,17 +338,18 @@ function command(p: State): Expression {
   if (ACCENTS.has(c) || BOLD.has(c) || LETTERFORMS.has(c)) return decorated(p);
   if (c === 'Re' || c === 'Im') {
     next(p);
-    return applyKnown(p, from, c === 'Re' ? 're' : 'im', `\\${c}`);
+    const known = wordName(c);
+    if (known) return applyKnown(p, from, known);
   }
   if (SYMBOLS.has(c)) {
     if (c === 'nabla') fail(p, 'Vector derivatives are not read; write the components.');
     if (c === 'prime') fail(p, 'A prime stands here without a name before it; write the name.');
     return plainSymbol(p);
   }
-  const id = functionId(c);
-  if (id) {
+  const known = commandName(c);
+  if (known) {
     next(p);
-    return applyKnown(p, from, id, `\\${c}`);
+    return applyKnown(p, from, known);
   }
   if (c === 'partial') fail(p, 'A derivative sign stands alone here; write it as \\frac{\\partial}{\\partial x}.');
   throw new Unreadable(`The command \\${c} is not known; define it with \\newcommand or write it with known functions.`, { start: t.start, end: t.end }, 'unknown-function');
@@ -423,5 +424,5 @@ function hypergeometric(p: State, from: number): Expression {
   const args = bracketArguments(p);
   const wanted = Number(upper) + Number(lower) + 1;
   if (args.length !== wanted) fail(p, `This hypergeometric function needs ${wanted} arguments; ${args.length} are given.`, p.tokens[from]);
-  return node(p, from, { kind: 'call', function: `hypergeometric${upper}F${lower}`, args, written: `{}_${upper}F_${lower}` });
+  return node(p, from, { kind: 'call', function: 'hypergeometric', args: [build.number(Number(upper)), build.number(Number(lower)), ...args], written: `{}_${upper}F_${lower}` });
 }

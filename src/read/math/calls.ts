@@ -1,10 +1,11 @@
 /** Arguments of known functions: in brackets, in braces, or bare (`\sin 2\pi x`), with exponents, subscripts and primes on the name. */
 import { build, type Expression, freeSymbols } from '../../expression/index.ts';
 import { isName } from './facts.ts';
-import { functionId } from './functionNames.ts';
+import { describe } from '../../functions/index.ts';
+import { commandName, type KnownName, resolve, wordName } from './functionNames.ts';
 import { exponentOf, isCondition, smallText } from './grammar.ts';
 import { deeper, fail, isCommand, isMark, named, next, node, peek, type State } from './state.ts';
-import type { Token } from './tokens.ts';
+import { type Token, Unreadable } from './tokens.ts';
 
 const OPENERS = ['(', '[', '\\{'] as const;
 export const opensBracket = (t: Token): boolean => isMark(t, ...OPENERS);
@@ -33,61 +34,82 @@ export function bracketArguments(p: State): Expression[] {
   });
 }
 
-/** Functions whose inverse is meant by an exponent -1. */
-const INVERSES: Readonly<Record<string, string>> = { sin: 'asin', cos: 'acos', tan: 'atan', cot: 'acot', sec: 'asec', csc: 'acsc', sinh: 'asinh', cosh: 'acosh', tanh: 'atanh', coth: 'acoth', sech: 'asech', csch: 'acsch' };
-
 /** A known function whose name has been read: exponent, subscript, primes, argument. `from` is the token where the name starts. */
-export function applyKnown(p: State, from: number, id: string, written: string): Expression {
+export function applyKnown(p: State, from: number, known: KnownName): Expression {
   let exponent: Expression | null = null;
-  let index: Expression | null = null;
+  let index: { readonly value: Expression; readonly text: string } | null = null;
   let primes = 0;
   for (;;) {
     const t = peek(p);
     if (isMark(t, '^') && exponent === null) {
       next(p);
-      exponent = exponentOf(p);
+      exponent = deeper(p, () => exponentOf(p));
     } else if (t.kind === 'super' && exponent === null) {
       next(p);
       exponent = smallText(t);
     } else if (isMark(t, '_') && index === null) {
-      next(p);
-      index = p.grammar.texArgument(p);
+      const at = next(p).end;
+      const value = p.grammar.texArgument(p);
+      index = { value, text: braced(p.text.slice(value.span?.start ?? at, value.span?.end ?? at).replace(/\s/g, '')) };
     } else if (t.kind === 'sub' && index === null) {
       next(p);
-      index = smallText(t);
+      index = { value: smallText(t), text: braced(t.text) };
     } else if (isMark(t, "'")) {
       next(p);
       primes += 1;
     } else break;
   }
-  const args = opensBracket(skipGap(p)) ? bracketArguments(p) : [bareArgument(p, written)];
-  if (args.length === 0) fail(p, `The brackets behind ${written} are empty; write the argument.`, p.tokens[p.at - 1]);
-  const inverse = exponent !== null && isMinusOne(exponent) ? INVERSES[id] : undefined;
-  let value = plainCall(p, from, inverse ?? id, written, index, primes, args);
-  if (exponent !== null && inverse === undefined) value = node(p, from, { kind: 'power', base: value, exponent });
-  return value;
-}
-
-function plainCall(p: State, from: number, id: string, written: string, index: Expression | null, primes: number, args: readonly Expression[]): Expression {
-  const [first] = args;
-  if (id === 'sqrt' && first) return node(p, from, { kind: 'power', base: first, exponent: build.number({ num: 1n, den: 2n }) });
-  if (id === 'cbrt' && first) return node(p, from, { kind: 'root', degree: build.number(3), radicand: first });
-  if (id === 'log' && first && (index !== null || args.length === 2)) {
-    const base = index ?? args[1];
-    if (base?.kind === 'number' && base.value.den === 1n && base.value.num === 10n) return node(p, from, { kind: 'call', function: 'log10', args: [first], written });
-    if (base?.kind === 'number' && base.value.den === 1n && base.value.num === 2n) return node(p, from, { kind: 'call', function: 'log2', args: [first], written });
-    if (base?.kind === 'constant' && base.name === 'e') return node(p, from, { kind: 'call', function: 'log', args: [first], written });
-    if (base) return node(p, from, { kind: 'quotient', numerator: { kind: 'call', function: 'log', args: [first], written }, denominator: { kind: 'call', function: 'log', args: [base] } });
+  const args = opensBracket(skipGap(p)) ? bracketArguments(p) : [bareArgument(p, known.written)];
+  if (args.length === 0) fail(p, `The brackets behind ${known.written} are empty; write the argument.`, p.tokens[p.at - 1]);
+  const own = ownForm(known, index?.value ?? null, args);
+  if (own) return raised(p, from, node(p, from, own), exponent);
+  const found = resolve(known, { index: index?.text ?? null, primes, inverse: exponent !== null && isMinusOne(exponent), arguments: args.length });
+  if (!found) {
+    const first = p.tokens[from] as Token;
+    throw new Unreadable(`The function ${known.written} is not known with ${args.length === 1 ? 'one argument' : `${args.length} arguments`}${index ? ' and a subscript' : ''}; check its arguments.`, { start: first.start, end: Math.max(first.end, first.start) }, 'unknown-function');
   }
-  const all = index === null ? args : [index, ...args];
-  if (primes > 0) return derivativeOfCall(p, from, id, written, all, primes);
-  return node(p, from, { kind: 'call', function: id, args: all, written });
+  const { description } = found;
+  const all = [...(index !== null && found.tookIndex === 'argument' ? [index.value] : []), ...(found.leadingZero ? [build.number(0)] : []), ...args];
+  if (index !== null && found.tookIndex === 'none') fail(p, `The subscript of ${known.written} is not understood; remove it or write it as an argument.`, p.tokens[from]);
+  const call = found.tookPrimes || primes === 0 ? node(p, from, { kind: 'call', function: description.id, args: all, written: known.written }) : derivativeOfCall(p, from, description.id, known.written, all, primes);
+  return found.tookInverse ? call : raised(p, from, call, exponent);
 }
 
-/** f'(u): the derivative at u. With a symbol as argument it is d/du; else an unspecified derivative cannot be written as a node of a known function. */
+const raised = (p: State, from: number, base: Expression, exponent: Expression | null): Expression => (exponent === null ? base : node(p, from, { kind: 'power', base, exponent }));
+const braced = (text: string): string => {
+  const inner = text.replace(/^\{(.*)\}$/, '$1');
+  return inner.length === 1 || /^\\[A-Za-z]+$/.test(inner) ? inner : `{${inner}}`;
+};
+
+/** Forms that are nodes of their own: roots, and logarithms to a base. */
+function ownForm(known: KnownName, index: Expression | null, args: readonly Expression[]): Expression | null {
+  const [first, second] = args;
+  if (!first) return null;
+  const { plain, latex } = known;
+  if (args.length === 1 && index === null) {
+    if (plain === 'sqrt') return build.squareRoot(first);
+    if (plain === 'cbrt') return build.root(3, first);
+    if (plain === 're' || plain === 'Re') return { kind: 'call', function: 're', args, written: known.written };
+    if (plain === 'im' || plain === 'Im') return { kind: 'call', function: 'im', args, written: known.written };
+    if (plain === 'conj') return { kind: 'call', function: 'conj', args, written: known.written };
+  }
+  const base = index ?? (args.length === 2 ? second : undefined);
+  if (base && /^(?:\\(?:log|ln)|\\operatorname\{(?:log|ln)\})$/.test(latex)) {
+    const whole = base.kind === 'number' && base.value.den === 1n ? base.value.num : 0n;
+    if (whole === 10n || whole === 2n) return { kind: 'call', function: whole === 10n ? 'log10' : 'log2', args: [first], written: known.written };
+    const natural: Expression = { kind: 'call', function: 'log', args: [first], written: known.written };
+    return base.kind === 'constant' && base.name === 'e' ? natural : build.quotient(natural, build.call('log', base));
+  }
+  return null;
+}
+
+/** f'(u), the derivative at u: by d/du where u is a symbol, else by the derivative that the function's description states. */
 export function derivativeOfCall(p: State, from: number, id: string, written: string, args: readonly Expression[], primes: number): Expression {
   const last = args[args.length - 1];
-  if (last?.kind === 'symbol') return node(p, from, { kind: 'derivative', body: { kind: 'call', function: id, args, written }, variable: last, times: primes });
+  const call: Expression = { kind: 'call', function: id, args, written };
+  if (last?.kind === 'symbol') return node(p, from, { kind: 'derivative', body: node(p, from, call), variable: last, times: primes });
+  const stated = primes === 1 ? describe(id)?.derivative?.(args, args.length - 1) : null;
+  if (stated) return { ...stated, span: node(p, from, call).span };
   return fail(p, `The prime on ${written} is understood only with a single symbol as argument; write the derivative out.`, p.tokens[from]);
 }
 
@@ -102,14 +124,14 @@ function skipGap(p: State): Token {
 /** Whether the factor that starts here is a function, operator or order term, which ends a bare argument. */
 function startsFunction(p: State): boolean {
   const t = peek(p);
-  if (t.kind === 'word') return t.text.length > 1 ? functionId(t.text) !== null : /^[Oo]$/.test(t.text);
-  if (t.kind === 'command') return functionId(t.text) !== null || /^(?:int|sum|prod|lim|mathcal|order|cdots|ldots|dots|oint|iint)$/.test(t.text);
+  if (t.kind === 'word') return t.text.length > 1 ? wordName(t.text) !== null : /^[Oo]$/.test(t.text);
+  if (t.kind === 'command') return (!isName(t) && commandName(t.text) !== null) || /^(?:int|sum|prod|lim|mathcal|order|cdots|ldots|dots|oint|iint)$/.test(t.text);
   if (t.kind === 'letter') {
     if (t.text === 'e' && isMark(peek(p, 1), '^')) return true;
     if (/^[Oo]$/.test(t.text) && isMark(peek(p, 1), '(')) return true;
     let word = '';
     for (let k = 0; k < 8 && peek(p, k).kind === 'letter' && (k === 0 || !peek(p, k).spaced); k += 1) word += peek(p, k).text;
-    return word.length > 1 && functionId(word) !== null;
+    return word.length > 1 && wordName(word) !== null;
   }
   return false;
 }

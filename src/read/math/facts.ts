@@ -5,6 +5,10 @@ import { GREEK } from './unicode.ts';
 export interface NameFacts {
   /** Written with a prime or a comma in its brackets, or differentiated. */
   readonly surelyFunctions: ReadonlySet<string>;
+  /** Differentiated somewhere (`\partial E_n`): a function of the author's own. */
+  readonly differentiated: ReadonlySet<string>;
+  /** The text shows a truncated expansion: dots, O, an approximation sign. */
+  readonly truncated: boolean;
   /** Stand somewhere without brackets behind them. */
   readonly bare: ReadonlySet<string>;
   /** Single letters of plain text that stand alone somewhere, so that a run of them is a product. */
@@ -27,6 +31,7 @@ export function nameText(t: Token): string {
 
 export function gatherFacts(tokens: readonly Token[], match: Int32Array): NameFacts {
   const surelyFunctions = new Set<string>();
+  const differentiated = new Set<string>();
   const bare = new Set<string>();
   const alone = new Set<string>();
   const indices = new Set<string>();
@@ -98,7 +103,10 @@ export function gatherFacts(tokens: readonly Token[], match: Int32Array): NameFa
       let depth = i - 1;
       while (depth > 0 && tokens[depth]?.kind !== 'open') depth -= 1;
       const command = token(depth - 1);
-      if (command?.kind === 'command' && /frac$/.test(command.text)) surelyFunctions.add(full);
+      if (command?.kind === 'command' && /frac$/.test(command.text)) {
+        surelyFunctions.add(full);
+        differentiated.add(full);
+      }
     }
     if (name === 'e' && !subscripted && !t.upright) {
       if (is(i + 1, '^')) {
@@ -117,7 +125,8 @@ export function gatherFacts(tokens: readonly Token[], match: Int32Array): NameFa
   }
   const words = tokens.some((t) => t.kind === 'command' && /^(?:ln|log|lim|exp)$/.test(t.text));
   const eulerNumber = variableExponent || eulerByUse || (!bareE && sawEPower && !(plainSquareOnly && !words));
-  return { surelyFunctions, bare, alone, eulerNumber, imaginary: jInExponent ? 'j' : iBound ? null : 'i', dotProducts, indices };
+  const truncated = tokens.some((t, i) => (t.kind === 'command' && /^(?:[cl]?dots.?|approx|sim|simeq|mathcal|order)$/.test(t.text)) || t.text === '...' || (/^[Oo]$/.test(t.text) && tokens[i + 1]?.text === '('));
+  return { surelyFunctions, differentiated, truncated, bare, alone, eulerNumber, imaginary: jInExponent ? 'j' : iBound ? null : 'i', dotProducts, indices };
 }
 
 function exponentText(tokens: readonly Token[], match: Int32Array, at: number): string {

@@ -93,12 +93,12 @@ export function sum(p: State): Expression {
         const value = p.grammar.term(p);
         const minus = signs.filter((s) => s.text === '-').length % 2 === 1;
         terms.push(minus ? node(p, start, { kind: 'negation', operand: value }) : value);
-      } else if (p.grammar.startsFactor(p) && (terms.length === 0 || joinsWithoutSign(terms))) {
+      } else if (p.grammar.startsFactor(p) && (terms.length === 0 || joinsWithoutSign(p, terms))) {
         terms.push(p.grammar.term(p));
       } else break;
       const gap = p.at;
       while (peek(p).kind === 'space') next(p);
-      const joins = isSign(peek(p)) || (joinsWithoutSign(terms) && p.grammar.startsFactor(p));
+      const joins = isSign(peek(p)) || joinsWithoutSign(p, terms);
       if (!joins) {
         p.at = gap;
         break;
@@ -111,8 +111,11 @@ export function sum(p: State): Expression {
 }
 
 const capital = (s: string): string => s.charAt(0).toUpperCase() + s.slice(1);
-/** `\cdots o(x^3)`: after dots a term may follow without a sign. */
-const joinsWithoutSign = (terms: readonly Expression[]): boolean => terms[terms.length - 1]?.kind === 'dots';
+/** `\cdots o(x^3)`: after dots an order term may follow without a sign. */
+const joinsWithoutSign = (p: State, terms: readonly Expression[]): boolean => {
+  const last = terms[terms.length - 1];
+  return (last?.kind === 'dots' || (last?.kind === 'negation' && last.operand.kind === 'dots')) && (isOrderName(p) || isCommand(peek(p), 'mathcal', 'order'));
+};
 
 const isTimes = (t: Token): boolean => isMark(t, '*') || isCommand(t, 'cdot', 'times', 'ast', 'bullet', 'star', 'cross', 'dotproduct');
 const isDivide = (t: Token): boolean => isMark(t, '/') || isCommand(t, 'div', 'slash');

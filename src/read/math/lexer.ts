@@ -195,6 +195,8 @@ export function lex(text: string, options: LexOptions): Token[] {
       const macro = options.macros.get(name);
       if (macro) return expand(macro, at, end);
       if (name === '\\') {
+        // `\\\\[ ... \\\\]`: display delimiters out of a string literal.
+        if (body.charAt(end) === ']' || (body.charAt(end) === '[' && body.indexOf('\\\\]', end) > 0)) return end + 1;
         const size = optional(end);
         if (size && /^\s*-?[\d.]+\s*(?:em|ex|pt|mm|cm|in|\\\w+)\s*$/.test(size.content)) end = size.end;
         push('mark', '\\\\', at, end);

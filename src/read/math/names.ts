@@ -1,12 +1,12 @@
 /** A name in a formula: symbol, constant, unspecified function, or special function written with a letter. */
 import { build, type Expression } from '../../expression/index.ts';
 import { isName, nameText } from './facts.ts';
-import { functionId } from './functionNames.ts';
+import { wordName } from './functionNames.ts';
 import { applyKnown, bracketArguments } from './calls.ts';
 import { letterFunction } from './letterFunctions.ts';
 import { fail, isMark, next, node, peek, type State } from './state.ts';
 import { GREEK } from './unicode.ts';
-import type { Token } from './tokens.ts';
+import { type Token, Unreadable } from './tokens.ts';
 
 /** Subscript text in canonical form: one character or command bare, more in braces, no spaces. */
 export function subscript(p: State): string {
@@ -108,7 +108,7 @@ const isPrimeExponent = (p: State): boolean => {
 /** Whether `^{(n)}` behind this name counts derivatives: it does for everything that is a function here. */
 function looksLikeFunction(p: State, base: string, index: string, primes: number): boolean {
   const full = index === '' ? base : `${base}_${index}`;
-  return primes > 0 || p.facts.surelyFunctions.has(full) || p.options.functions.has(full) || /^(?:[fghuyFGHUY]|\\psi|\\phi|\\varphi)$/.test(base);
+  return primes > 0 || p.facts.surelyFunctions.has(full) || p.options.functions.has(full) || /^(?:[fghuyFGHUY]|\\psi|\\phi|\\varphi|\\zeta|\\Gamma)$/.test(base);
 }
 
 /**
@@ -165,6 +165,8 @@ export function order(p: State, from: number, little: boolean): Expression {
   return node(p, from, { kind: 'order', little, argument: args.length === 1 ? argument : { kind: 'sum', terms: args } });
 }
 
+/** Functions that take an argument without brackets also where they are written as plain letters. */
+const FAMILIAR = /^(?:sin|cos|tan|cot|sec|csc|sinh|cosh|tanh|coth|sech|csch|exp|log|ln|a(?:rc)?(?:sin|cos|tan|cot)|a(?:r|rc)?(?:sinh|cosh|tanh)|sqrt|cbrt|erf|erfc)$/;
 /** Letters of LaTeX text without backslash that spell a function before a bracket or argument: `cos(x)`, `exp(x)`, `sin x`. */
 function functionRun(p: State, from: number): Expression | null {
   let word = p.tokens[from]?.text ?? '';
@@ -176,14 +178,21 @@ function functionRun(p: State, from: number): Expression | null {
     k += 1;
   }
   if (word.length < 2) return null;
-  while (p.tokens[k]?.kind === 'digit' && functionId(word + (p.tokens[k]?.text ?? ''))) word += p.tokens[k++]?.text ?? '';
-  const id = functionId(word) ?? (word === 'sqrt' ? 'sqrt' : null);
-  if (!id) return null;
+  for (let digits = k; p.tokens[digits]?.kind === 'digit' && digits < k + 2; digits += 1) {
+    const longer = word + p.tokens.slice(k, digits + 1).map((t) => t.text).join('');
+    if (wordName(longer) && isMark(p.tokens[digits + 1] as Token, '(')) {
+      word = longer;
+      k = digits + 1;
+      break;
+    }
+  }
+  const known = wordName(word);
+  if (!known) return null;
   const after = p.tokens[k];
-  const familiar = /^(?:sin|cos|tan|cot|sinh|cosh|tanh|exp|log|ln|arcsin|arccos|arctan|sqrt)$/.test(word);
+  const familiar = FAMILIAR.test(word);
   if (!(after && (isMark(after, '(') || (familiar && (after.spaced || isMark(after, '^', '[') || after.kind === 'open' || after.kind === 'super'))))) return null;
   p.at = k;
-  return applyKnown(p, from, id, word);
+  return applyKnown(p, from, known);
 }
 
 const CONSTANT_WORDS: Readonly<Record<string, Expression>> = { pi: build.constant('pi'), inf: build.constant('infinity'), infinity: build.constant('infinity'), infty: build.constant('infinity'), oo: build.constant('infinity'), Inf: build.constant('infinity') };
@@ -191,16 +200,17 @@ const CONSTANT_WORDS: Readonly<Record<string, Expression>> = { pi: build.constan
 /** An identifier of plain notation or an upright name: a constant, a function with its argument, or the canonical text of a symbol. */
 function plainWord(p: State, from: number, t: Token): Expression | string {
   const word = t.text;
-  const before = p.tokens[from - 1];
-  void before;
   if (word === 'e') return 'e';
   if (word.length === 1) return word;
   const constant = CONSTANT_WORDS[word];
   if (constant && !p.options.symbols.has(word) && !(t.upright && word !== 'pi')) return node(p, from, { ...constant });
   if (word === 'Pi' && !isMark(peek(p), '(')) return node(p, from, build.constant('pi'));
   if (p.options.symbols.has(word)) return word;
-  const id = functionId(word) ?? (word === 'sqrt' || word === 'cbrt' ? word : null);
-  if (id && (t.upright || canTakeArgument(p))) return applyKnown(p, from, id, word);
+  const known = wordName(word);
+  if (known && canTakeArgument(p, word, t)) return applyKnown(p, from, known);
+  if (t.upright && !known && isMark(peek(p), '(') && !p.options.functions.has(word)) {
+    throw new Unreadable(`The function ${word} is not known; write it with known functions.`, { start: t.start, end: t.end }, 'unknown-function');
+  }
   const [head = '', ...rest] = word.split('_');
   const greek = /^([A-Za-z]+?)(\d*)$/.exec(head);
   const base = GREEK.has(head) ? `\\${head === 'varepsilon' ? 'epsilon' : head}` : greek && GREEK.has(greek[1] ?? '') && greek[2] ? `\\${greek[1]}_${braced(greek[2])}` : head === 'hbar' ? '\\hbar' : head;
@@ -211,6 +221,18 @@ function plainWord(p: State, from: number, t: Token): Expression | string {
   return base;
 }
 
-function canTakeArgument(p: State): boolean {
-  return isMark(peek(p), '(', '^', '[', '_', "'") || peek(p).kind === 'super' || p.grammar.startsFactor(p);
+/** Upright names and familiar functions take a bare argument; other plain words only one in brackets, so that `gamma x` stays a product. */
+function canTakeArgument(p: State, word: string, t: Token): boolean {
+  let k = p.at;
+  while (isMark(p.tokens[k] as Token, '^', '_', "'")) {
+    if (p.tokens[k]?.text === "'") k += 1;
+    else {
+      const close = p.match[k + 1] ?? -1;
+      k = close > k ? close + 1 : k + 2;
+      while (p.tokens[k]?.kind === 'digit' && p.tokens[k - 1]?.kind === 'digit') k += 1;
+    }
+  }
+  if (isMark(p.tokens[k] as Token, '(', '[', '\\{')) return true;
+  if (!t.upright && !FAMILIAR.test(word)) return false;
+  return k > p.at || p.grammar.startsFactor(p) || peek(p).kind === 'super' || peek(p).kind === 'space' || isMark(peek(p), '-');
 }

@@ -12,10 +12,95 @@ export const HALF: Rational = { num: 1n, den: 2n };
 
 const WORD = 0x1fffffffffffffn;
 
-/** Greatest common divisor, never negative. Numbers that fit a double are reduced in double arithmetic, which is exact below 2^53. */
-export function gcd(a: bigint, b: bigint): bigint {
-  let x = a < 0n ? -a : a;
-  let y = b < 0n ? -b : b;
+/** Below this many bits plain remainders beat Lehmer's steps (measured on a 2-core machine). */
+const LEHMER_FROM = 1n << 160n;
+const TWO_LEVELS_FROM = 4096;
+const HALF_WORD = 0x4000000;
+
+const bitLength = (v: bigint): number => {
+  const hex = v.toString(16);
+  return 4 * (hex.length - 1) + (32 - Math.clz32(parseInt(hex[0] ?? '0', 16)));
+};
+
+/** a, b, c, d with ad - bc = 1 or -1: (x, y) becomes (ax + by, cx + dy). */
+type Step<T> = readonly [T, T, T, T];
+
+/** Euclid's quotients of two leading parts below 2^53, as long as the cofactors stay below 2^26. Null where not even one quotient is safe. */
+function leadingStep(x: number, y: number): Step<number> | null {
+  let [a, b, c, d] = [1, 0, 0, 1];
+  let u = x;
+  let v = y;
+  while (v >= HALF_WORD) {
+    const q = Math.floor(u / v);
+    const nextC = a - q * c;
+    const nextD = b - q * d;
+    if (Math.abs(nextC) > HALF_WORD || Math.abs(nextD) > HALF_WORD) break;
+    [a, c] = [c, nextC];
+    [b, d] = [d, nextD];
+    [u, v] = [v, u - q * v];
+  }
+  return b === 0 ? null : [a, b, c, d];
+}
+
+/** (x, y) after one of Lehmer's steps, larger first: leading parts give the quotients. Any such matrix keeps the gcd, so that a quotient spoilt by truncation costs time only. */
+function lehmerStep(x: bigint, y: bigint, bits: number): readonly [bigint, bigint, Step<number> | null] {
+  const shift = BigInt(Math.max(0, bits - 53));
+  const step = leadingStep(Number(x >> shift), Number(y >> shift));
+  if (!step) return [y, x % y, null];
+  const [a, b, c, d] = [BigInt(step[0]), BigInt(step[1]), BigInt(step[2]), BigInt(step[3])];
+  return [a * x + b * y, c * x + d * y, step];
+}
+
+const absoluteValue = (v: bigint): bigint => (v < 0n ? -v : v);
+
+/** The product of Lehmer's steps on the leading `size` bits, down to about half of them. */
+function blockStep(x: bigint, y: bigint, bits: number, size: number): Step<bigint> | null {
+  const shift = BigInt(bits - size);
+  let u = x >> shift;
+  let v = y >> shift;
+  let [a, b, c, d] = [1n, 0n, 0n, 1n];
+  let length = size;
+  while (length > size / 2 + 32 && v > 0n) {
+    const [p, q, step] = lehmerStep(u, v, length);
+    if (step) {
+      const [e, f, g, h] = [BigInt(step[0]), BigInt(step[1]), BigInt(step[2]), BigInt(step[3])];
+      [a, b, c, d] = [e * a + f * c, e * b + f * d, g * a + h * c, g * b + h * d];
+    } else {
+      const quotient = u / v;
+      [a, b, c, d] = [c, d, a - quotient * c, b - quotient * d];
+    }
+    u = p;
+    v = q;
+    if (u < 0n) [u, a, b] = [-u, -a, -b];
+    if (v < 0n) [v, c, d] = [-v, -c, -d];
+    if (u < v) [u, v, a, b, c, d] = [v, u, c, d, a, b];
+    length = bitLength(u);
+  }
+  return b === 0n ? null : [a, b, c, d];
+}
+
+/** Lehmer's algorithm (Knuth, TAOCP 2, 4.5.2), in two levels for very long numbers. */
+function longGcd(a: bigint, b: bigint): bigint {
+  let [x, y] = a >= b ? [a, b] : [b, a];
+  while (y >= LEHMER_FROM) {
+    const bits = bitLength(x);
+    const block = bits > TWO_LEVELS_FROM ? blockStep(x, y, bits, 1024) : null;
+    let p: bigint;
+    let q: bigint;
+    if (block) {
+      p = block[0] * x + block[1] * y;
+      q = block[2] * x + block[3] * y;
+    } else [p, q] = lehmerStep(x, y, bits);
+    p = absoluteValue(p);
+    q = absoluteValue(q);
+    [x, y] = p >= q ? [p, q] : [q, p];
+  }
+  return shortGcd(x, y);
+}
+
+function shortGcd(a: bigint, b: bigint): bigint {
+  let x = a;
+  let y = b;
   while (y > WORD) {
     [x, y] = [y, x % y];
   }
@@ -26,6 +111,13 @@ export function gcd(a: bigint, b: bigint): bigint {
     [small, rest] = [rest, small % rest];
   }
   return BigInt(small);
+}
+
+/** Greatest common divisor, never negative. Numbers that fit a double are reduced in double arithmetic, which is exact below 2^53; long ones by Lehmer's steps. */
+export function gcd(a: bigint, b: bigint): bigint {
+  const x = absoluteValue(a);
+  const y = absoluteValue(b);
+  return x >= LEHMER_FROM && y >= LEHMER_FROM ? longGcd(x, y) : shortGcd(x, y);
 }
 
 /** num/den in lowest terms. Throws a RangeError for den = 0: callers decide about division by zero first. */

@@ -46,8 +46,8 @@ export interface ExpandRequest extends CommonRequest {
   readonly details?: readonly Detail[];
 }
 
-/** `reading`: what was understood. `ladder`: bounds for 1..n terms. `reach`: proven distances for 2, 3, 4 terms. `plot`: samples. */
-export type Detail = 'reading' | 'ladder' | 'reach' | 'plot';
+/** `reading`: what was understood. `ladder`: bounds for 1..n terms. `reach`: proven distances for 2, 3, 4 terms. `plot`: samples. `insertion`: the result as the document would write it. */
+export type Detail = 'reading' | 'ladder' | 'reach' | 'plot' | 'insertion';
 
 export interface FitRequest extends CommonRequest {
   readonly ask: 'fit';
@@ -176,6 +176,17 @@ export interface ExpandAnswer {
   readonly reading?: ReadingAnswer;
   /** Samples of function and partial sum over the interval, doubles, for drawing only. */
   readonly plot?: PlotAnswer;
+  readonly insertion?: InsertionAnswer;
+}
+
+/** The result as it would stand in the document that was asked about. */
+export interface InsertionAnswer {
+  /** Relation, expansion and remainder in the document's own style (`= x - \frac{x^3}{6} + \mathcal{O}(x^5)`). */
+  readonly continuation: string;
+  /** The expansion alone, without relation. */
+  readonly expansion: string;
+  /** The sum as one expression of the document's programming language, and the lines that its file needs; null in prose and where the language cannot say it. */
+  readonly code: { readonly text: string; readonly imports: readonly string[] } | null;
 }
 
 export interface ReadingAnswer {

@@ -48,6 +48,10 @@ export interface ConsultAnswer {
   readonly sources: Sources;
   /** The expression in the document, as far as it was found. */
   readonly place: Place | null;
+  /** Symbols and dimensionless ratios that could be the small quantity, likeliest first. */
+  readonly candidates: readonly string[];
+  /** False where the expression is its own expansion, so that a hover would say nothing. */
+  readonly worthwhile: boolean;
 }
 
 export interface TextEdit extends Place {

@@ -1,0 +1,134 @@
+/** An expansion at a place in a document: weighs what was chosen, noted, remembered and set, asks the engine, and says where each part came from. */
+import type { Engine } from '../../engine.ts';
+import type { ErrorAnswer, ExpandAnswer, ExpandRequest } from '../../protocol.ts';
+import { candidatesIn } from './candidates.ts';
+import { readNotes } from './notes.ts';
+import type { ConsultAnswer, ConsultRequest, NoteReading, Question, Source, Sources } from './types.ts';
+
+export async function consult(request: ConsultRequest, engine: Engine): Promise<ConsultAnswer> {
+  const { text, language, selection } = request;
+  const notes = text.includes('leading-order:') ? readNotes(text, language) : [];
+  const { above, file } = notesFor(notes, text, selection.start, selection.end);
+  if (above?.skip) return declined('A note above says to skip this formula.');
+  const { asked, sources } = weigh([
+    ['chosen', request.chosen ?? {}],
+    ['note', above?.question ?? {}],
+    ['fileNote', file?.question ?? {}],
+    ['remembered', request.remembered ?? {}],
+  ]);
+  const told = { ...request.setting };
+  // Small quantities of the settings are a list of habits: the first that occurs in the formula counts, and only where nothing else was said.
+  const habits = told.small ?? [];
+  const base: Question = { ...withoutSmall(told), ...asked };
+  const settled = asked.variable !== undefined || asked.small !== undefined;
+  const tries: readonly { readonly question: Question; readonly variable: Source }[] = [
+    ...(settled ? [] : habits.map((variable) => ({ question: { ...base, variable }, variable: 'setting' as const }))),
+    { question: base, variable: sources.variable ?? sources.small ?? 'text' },
+  ];
+  for (const { question, variable } of tries) {
+    if (variable === 'setting' && !mentions(text, question.variable ?? '', selection.start, selection.end)) continue;
+    const answer = (await engine.ask(toRequest(request, question))) as ExpandAnswer | ErrorAnswer;
+    if (!answer.ok && variable === 'setting') continue;
+    const reading = answer.ok ? answer.reading : undefined;
+    return {
+      answer,
+      asked: question,
+      sources: complete(question, { ...sources, variable }, request),
+      place: reading ? { start: reading.start, end: reading.end } : placeOf(answer, request),
+      candidates: reading && reading.candidates.length > 0 ? reading.candidates : candidatesIn(text, language, selection),
+      worthwhile: !answer.ok || above !== undefined || saysSomething(answer),
+    };
+  }
+  return declined('Nothing could be asked about this place; select an expression.');
+}
+
+const declined = (message: string): ConsultAnswer => ({ answer: { ok: false, error: { code: 'bad-request', message } }, asked: {}, sources: {}, place: null, candidates: [], worthwhile: false });
+const withoutSmall = ({ small: _small, ...rest }: Question): Question => rest;
+
+/** Every part from the strongest source that has it. A variable and several small quantities exclude each other; a point goes with its variable. */
+function weigh(layers: readonly (readonly [Source, Question])[]): { readonly asked: Question; readonly sources: Sources } {
+  const asked: Record<string, unknown> = {};
+  const sources: Partial<Record<keyof Question, Source>> = {};
+  const owner = (): Source | undefined => sources.variable ?? sources.small;
+  for (const [source, question] of layers) {
+    const taken = owner();
+    for (const [key, value] of Object.entries(question) as [keyof Question, unknown][]) {
+      if (value === undefined || key in asked) continue;
+      if ((key === 'variable' || key === 'small') && taken !== undefined) continue;
+      if ((key === 'point' || key === 'side') && taken !== undefined && taken !== 'chosen' && taken !== source) continue;
+      if (key === 'order' && 'terms' in asked) continue;
+      if (key === 'terms' && 'order' in asked) continue;
+      asked[key] = value;
+      sources[key] = source;
+    }
+  }
+  return { asked: asked as Question, sources };
+}
+
+function complete(question: Question, sources: Sources, request: ConsultRequest): Sources {
+  const setting = request.setting ?? {};
+  const filled: Partial<Record<keyof Question, Source>> = { ...sources };
+  for (const key of Object.keys(question) as (keyof Question)[]) if (filled[key] === undefined && key in setting) filled[key] = 'setting';
+  return { point: 'default', side: 'default', terms: 'default', ...filled };
+}
+
+/** Without an interval nothing is bounded, and a tolerance serves only the reach. An order replaces the number of terms. */
+function toRequest(request: ConsultRequest, question: Question): ExpandRequest {
+  const { terms, order, ...rest } = question;
+  return {
+    ask: 'expand',
+    text: request.text,
+    language: request.language,
+    selection: request.selection,
+    ...rest,
+    ...(order === undefined ? { terms } : { order }),
+    details: request.details ?? ['reading'],
+    ...(request.budget_ms === undefined ? {} : { budget_ms: request.budget_ms }),
+  };
+}
+
+function placeOf(answer: ExpandAnswer | ErrorAnswer, { selection }: ConsultRequest): { readonly start: number; readonly end: number } | null {
+  if (selection.end > selection.start) return selection;
+  if (answer.ok || answer.error.start === undefined || answer.error.end === undefined) return null;
+  return { start: answer.error.start, end: answer.error.end };
+}
+
+/** A polynomial that is its own expansion has nothing to say. */
+function saysSomething(answer: ExpandAnswer): boolean {
+  if (!answer.exact || answer.prefactor !== undefined) return true;
+  return !answer.terms.every((term) => /^\d+$/.test(term.power) && term.log === 0 && term.scale === undefined);
+}
+
+const mentions = (text: string, symbol: string, start: number, end: number): boolean => {
+  const around = text.slice(Math.max(0, start - 400), end + 400);
+  return symbol !== '' && around.includes(symbol);
+};
+
+/** The note directly above the place (only blank lines, comments and the opening of a display between), and the last one for the file before it. */
+function notesFor(notes: readonly NoteReading[], text: string, start: number, end: number): { readonly above: NoteReading | undefined; readonly file: NoteReading | undefined } {
+  const readable = notes.filter((note) => note.problem === null && note.end <= Math.max(start, end) + 0);
+  const above = readable.findLast((note) => isDirectlyAbove(text.slice(note.end, start)));
+  const file = readable.findLast((note) => note !== above && isAlone(text, note));
+  return { above, file };
+}
+
+/** Between a note and the formula it serves stands nothing but what opens the formula, and the formula's own beginning. */
+function isDirectlyAbove(between: string): boolean {
+  const lines = between.split('\n').slice(1);
+  if (lines.length === 0) return false;
+  const own = lines.pop() ?? '';
+  const opened = lines.findIndex((line) => /^\s*(\\begin\{|\\\[|\$\$)/.test(line));
+  const before = opened < 0 ? lines : lines.slice(0, opened);
+  const inside = opened < 0 ? [] : lines.slice(opened + 1);
+  if (!before.every((line) => /^\s*($|%|#|\/\/|!|<!--|-->|\\label)/.test(line))) return false;
+  // In prose a note above a display serves all of that display.
+  if (opened >= 0) return inside.every((line) => !/\\end\{(equation|align|gather|multline|eqnarray)|\\\]|^\s*\$\$|^\s*$/.test(line)) && !/\\end\{(equation|align|gather|multline|eqnarray)/.test(own);
+  return true;
+}
+
+/** A note that serves a file stands at its head or is followed by an empty line. */
+function isAlone(text: string, note: NoteReading): boolean {
+  const after = text.slice(note.end, note.end + 200);
+  const head = text.slice(0, note.start).split('\n').length <= 3;
+  return head || /^[^\n]*\n[^\S\n]*\n/.test(after);
+}

@@ -7,3 +7,6 @@ export * as real from './real.ts';
 export * as complex from './complex.ts';
 export { ballArithmetic } from './ball-arithmetic.ts';
 export { type ComplexArithmetic, complexArithmetic, type Rectangle } from './complex-arithmetic.ts';
+/** Double intervals with outward rounding. */
+export * as interval from './doubles.ts';
+export { intervalArithmetic } from './interval-arithmetic.ts';

@@ -21,6 +21,8 @@ interface Written {
   readonly level: Level;
   /** Higher than a line of text: parentheses around it must grow. */
   readonly tall: boolean;
+  /** Ends with an argument without parentheses (`2\sin x`), which would take in what follows. */
+  readonly open?: boolean;
 }
 
 const RELATIONS: Readonly<Record<Relation, string>> = {
@@ -156,7 +158,7 @@ class LatexWriter {
 
   fraction(above: Written, below: Written): Written {
     if (this.style.fraction !== 'slash') return { text: `${this.style.fraction}{${above.text}}{${below.text}}`, level: Level.Power, tall: true };
-    const top = above.level >= Level.Product ? above : this.parenthesised(above);
+    const top = above.level >= Level.Product && above.open !== true ? above : this.parenthesised(above);
     const bottom = below.level >= Level.Power ? below : this.parenthesised(below);
     return { text: `${top.text}/${bottom.text}`, level: Level.Product, tall: top.tall || bottom.tall };
   }
@@ -182,7 +184,8 @@ class LatexWriter {
     return { text, level: Level.Sum, tall };
   }
 
-  product(factors: readonly Expression[]): Written {
+  product(nested: readonly Expression[]): Written {
+    const factors = nested.flatMap((f) => (f.kind === 'product' && !splitSign(f).negative ? f.factors : [f]));
     const { negative, magnitude } = splitSign({ kind: 'product', factors });
     if (negative) {
       const inner = this.at(magnitude, Level.Product);
@@ -190,17 +193,19 @@ class LatexWriter {
     }
     let text = '';
     let tall = false;
+    let ends = false;
     factors.forEach((factor, i) => {
       const last = i === factors.length - 1;
       let inner = this.write(factor);
-      const open = inner.level === Level.Prefix || (inner.level === Level.Product && factor.kind !== 'product' && factor.kind !== 'quotient');
-      if (inner.level < Level.Product || (open && !last) || (inner.level === Level.Product && (factor.kind === 'quotient' || factor.kind === 'number') && this.style.fraction === 'slash' && i > 0)) {
+      const open = inner.open === true || inner.level === Level.Prefix || (inner.level === Level.Product && factor.kind !== 'product' && factor.kind !== 'quotient');
+      if (inner.level < Level.Product || (open && !last) || (inner.level === Level.Product && (factor.kind === 'quotient' || factor.kind === 'number') && this.style.fraction === 'slash')) {
         inner = factor.kind === 'call' && inner.level === Level.Prefix ? this.call(factor.function, factor.args, true) : this.parenthesised(inner);
       }
       tall ||= inner.tall;
+      ends = inner.open === true;
       text = i === 0 ? inner.text : this.juxtapose(text, factors[i - 1], inner.text, factor);
     });
-    return { text, level: Level.Product, tall };
+    return { text, level: Level.Product, tall, open: ends };
   }
 
   juxtapose(left: string, leftFactor: Expression | undefined, right: string, rightFactor: Expression): string {
@@ -234,9 +239,14 @@ class LatexWriter {
     return { text, level: Level.Power, tall: inner.tall };
   }
 
-  /** The exponent with its braces, or the single digit or letter without. Fractions are written with a slash. */
+  /** For exponents and indices: fractions with a slash. */
+  small(): LatexWriter {
+    return new LatexWriter({ ...this.style, fraction: 'slash' });
+  }
+
+  /** The exponent with its braces, or the single digit or letter without. */
   exponent(e: Expression): { text: string } {
-    const text = new LatexWriter({ ...this.style, fraction: 'slash' }).write(e).text;
+    const text = this.small().write(e).text;
     return { text: /^[A-Za-z0-9]$/.test(text) ? text : `{${text}}` };
   }
 
@@ -249,12 +259,13 @@ class LatexWriter {
   }
 
   call(id: string, args: readonly Expression[], delimited = false): Written {
-    const written = args.map((a) => this.write(a));
+    const indices = describe(id)?.names.latexIndices?.count ?? 0;
+    const written = args.map((a, i) => (i < indices ? { ...this.small().write(a), tall: false } : this.write(a)));
     const texts = written.map((w) => w.text);
     const tall = written.some((w) => w.tall);
     const [first] = written;
-    if (id === 'exp' && first && this.style.exponential === 'power') return { text: `${this.style.euler}^{${new LatexWriter({ ...this.style, fraction: 'slash' }).write(args[0] as Expression).text}}`, level: Level.Power, tall: false };
-    if (id === 'abs' && first) return { text: tall ? `\\left|${first.text}\\right|` : `|${first.text}|`, level: Level.Atom, tall };
+    if (id === 'exp' && first && this.style.exponential === 'power') return { text: `${this.style.euler}^{${args[0] ? this.small().write(args[0]).text : ''}}`, level: Level.Power, tall: false };
+    if (id === 'abs' && first) return { text: `\\left|${first.text}\\right|`, level: Level.Atom, tall };
     if (id === 'factorial' && args[0]) {
       const inner = this.at(args[0], Level.Atom);
       return { text: `${inner.text}!`, level: Level.Power, tall };
@@ -282,7 +293,7 @@ class LatexWriter {
     const [only] = args;
     const tall = written.some((w) => w.tall);
     const text = written.map((w) => w.text).join(', ');
-    if (args.length === 1 && only && !delimited && BARE_NAMES.test(name) && standsBare(only, text)) return { text: glue(name, `${/^[A-Za-z0-9]/.test(text) ? ' ' : ''}${text}`), level: Level.Prefix, tall };
+    if (args.length === 1 && only && !delimited && BARE_NAMES.test(name) && standsBare(only, text)) return { text: glue(name, `${/^[A-Za-z0-9]/.test(text) ? ' ' : ''}${text}`), level: Level.Prefix, tall, open: true };
     const grows = tall && this.style.parentheses === 'auto';
     return { text: grows ? `${name}\\left(${text}\\right)` : `${name}(${text})`, level: name.includes('^') || args.length !== 1 || BARE_NAMES.test(name) ? Level.Power : Level.Atom, tall };
   }

@@ -1,6 +1,6 @@
 /** An expansion at a place in a document: weighs what was chosen, noted, remembered and set, asks the engine, and says where each part came from. */
 import type { Engine } from '../../engine.ts';
-import type { ErrorAnswer, ExpandAnswer, ExpandRequest } from '../../protocol.ts';
+import type { Detail, ErrorAnswer, ExpandAnswer, ExpandRequest } from '../../protocol.ts';
 import { candidatesIn } from './candidates.ts';
 import { readNotes } from './notes.ts';
 import type { ConsultAnswer, ConsultRequest, NoteReading, Question, Source, Sources } from './types.ts';
@@ -82,7 +82,7 @@ function toRequest(request: ConsultRequest, question: Question): ExpandRequest {
     selection: request.selection,
     ...rest,
     ...(order === undefined ? { terms } : { order }),
-    details: request.details ?? ['reading'],
+    details: [...new Set<Detail>(['reading', 'insertion', ...(request.details ?? [])])],
     ...(request.budget_ms === undefined ? {} : { budget_ms: request.budget_ms }),
   };
 }

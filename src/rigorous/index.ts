@@ -10,3 +10,6 @@ export { type ComplexArithmetic, complexArithmetic, type Rectangle } from './com
 /** Double intervals with outward rounding. */
 export * as interval from './doubles.ts';
 export { intervalArithmetic } from './interval-arithmetic.ts';
+export {
+  complexBallTrees, type Describe, type EnclosableFunction, enclose, encloseInterval, encloseReal, encloseRectangle, evaluateTree, intervalTrees, isElementaryName, rationalOf, realBallTrees, type TreeArithmetic,
+} from './enclose.ts';

@@ -3,6 +3,7 @@ import { build, type Expression, Q } from '../../expression/index.ts';
 import type { FunctionDescription } from '../description.ts';
 import { asRational } from '../exactForms.ts';
 import { everywhere, names } from '../naming.ts';
+import { acoshLocal, asinhLocal, atanhLocal } from './inverseLocal.ts';
 
 const { call, difference, negation, number, power, product, quotient, squareRoot, sum } = build;
 const one = (args: readonly Expression[]): Expression => args[0] ?? number(0);
@@ -93,6 +94,7 @@ export const hyperbolic: readonly FunctionDescription[] = [
     names: names({ latex: [...inverseLatex('sinh'), '\\operatorname{Arsinh}', '\\operatorname{arsh}'], plain: ['arcsinh', 'arsinh'], mpmath: 'asinh', code: everywhere('asinh', { python: ['arcsinh', 'asinh'], hlsl: [], java: [] }) }),
     derivative: (args) => reciprocal(squareRoot(sum(square(one(args)), number(1)))),
     value: atZero(number(0)),
+    local: asinhLocal,
     source: 'DLMF 4.37.16, 4.38.1',
   },
   {
@@ -105,6 +107,7 @@ export const hyperbolic: readonly FunctionDescription[] = [
       const q = asRational(one(args));
       return q && Q.isOne(q) ? number(0) : null;
     },
+    local: acoshLocal,
     domain: 'x >= 1',
     source: 'DLMF 4.37.19',
   },
@@ -116,6 +119,7 @@ export const hyperbolic: readonly FunctionDescription[] = [
     names: names({ latex: [...inverseLatex('tanh'), '\\operatorname{Artanh}', '\\operatorname{arth}'], plain: ['arctanh', 'artanh'], mpmath: 'atanh', code: everywhere('atanh', { python: ['arctanh', 'atanh'], hlsl: [], java: [] }) }),
     derivative: (args) => reciprocal(difference(number(1), square(one(args)))),
     value: atZero(number(0)),
+    local: atanhLocal,
     domain: '-1 < x < 1',
     source: 'DLMF 4.37.24',
   },

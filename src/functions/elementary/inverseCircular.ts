@@ -3,6 +3,7 @@ import { build, type Expression, Q, type Rational } from '../../expression/index
 import type { FunctionDescription } from '../description.ts';
 import { piTimes, signedSquare } from '../exactForms.ts';
 import { everywhere, names } from '../naming.ts';
+import { acosLocal, asinLocal, atanLocal } from './inverseLocal.ts';
 
 const { call, difference, negation, number, power, product, quotient, squareRoot, sum } = build;
 const one = (args: readonly Expression[]): Expression => args[0] ?? number(0);
@@ -50,6 +51,7 @@ export const inverseCircular: readonly FunctionDescription[] = [
       const q = asineAngle(one(args));
       return q && piTimes(q);
     },
+    local: asinLocal,
     domain: '-1 <= x <= 1',
     source: 'DLMF 4.24.1, 4.24.7',
   },
@@ -63,6 +65,7 @@ export const inverseCircular: readonly FunctionDescription[] = [
       const q = asineAngle(one(args));
       return q && piTimes(Q.subtract(Q.HALF, q));
     },
+    local: acosLocal,
     domain: '-1 <= x <= 1',
     source: 'DLMF 4.24.2, 4.24.8',
   },
@@ -77,6 +80,7 @@ export const inverseCircular: readonly FunctionDescription[] = [
       const q = angle(TANGENTS, one(args));
       return q && piTimes(q);
     },
+    local: atanLocal,
     source: 'DLMF 4.24.3, 4.24.4, 4.24.9',
   },
   {

@@ -12,9 +12,10 @@ export const failure = (code: ErrorCode, message: string, place?: { readonly sta
 /** Thrown deep inside a computation when a failure is the only way on; the door of each room turns it into an Outcome. */
 export class Declined extends Error {
   readonly failure: Failure;
-  constructor(code: ErrorCode, message: string) {
+  /** `place` is where in the text that was read, where that is known. */
+  constructor(code: ErrorCode, message: string, place?: { readonly start: number; readonly end: number }) {
     super(message);
-    this.failure = { code, message };
+    this.failure = place ? { code, message, start: place.start, end: place.end } : { code, message };
   }
 }
 

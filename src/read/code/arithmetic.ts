@@ -3,10 +3,10 @@ import { build, type Expression, Q, type Span } from '../../expression/index.ts'
 import { codeCall } from '../../functions/index.ts';
 import { Declined } from '../../outcome.ts';
 import { choose } from './conditions.ts';
-import type { Environment } from './environment.ts';
+import { divide, literalInteger } from './division.ts';
+import type { Environment, Meaning } from './environment.ts';
 import type { Arithmetic } from './languages/language.ts';
 import { PI } from './languages/constants.ts';
-import { divide, literalInteger, type Meaning } from './meaning.ts';
 import type { Code } from './syntax.ts';
 import { combine, type ValueType } from './types.ts';
 

@@ -3,8 +3,7 @@ import { build, type Expression, Q, type Span } from '../../expression/index.ts'
 import { codeCall, describe } from '../../functions/index.ts';
 import { Declined } from '../../outcome.ts';
 import { libraryArithmetic } from './arithmetic.ts';
-import type { Environment } from './environment.ts';
-import type { Meaning } from './meaning.ts';
+import type { Environment, Meaning } from './environment.ts';
 import { libraryName, namedConstant, segments } from './paths.ts';
 import type { CallCode, Code, MemberCode, NameCode } from './syntax.ts';
 import { combine, declaredType, floating, INTEGER, UNKNOWN, type ValueType } from './types.ts';
@@ -167,4 +166,22 @@ function knownFunction(name: string, count: number, env: Environment): ((args: r
   const { arity } = description;
   const fits = typeof arity === 'number' ? arity === count : count >= arity[0] && count <= arity[1];
   return fits ? (args) => build.call(description.id, ...args) : null;
+}
+
+/** True for calls that are library functions, arithmetic or conversions of the language. */
+export function isLibraryCall(code: CallCode, env: Environment): boolean {
+  const known = (name: string, count: number): boolean => {
+    const { language } = env;
+    const plain = language.foldCase ? name.toLowerCase() : name.replace(/<.*>$/s, '').replace(/\.$/, '');
+    const names = [plain, ...Object.keys(language.nameSuffixes).filter((suffix) => plain.endsWith(suffix)).map((suffix) => plain.slice(0, -suffix.length))];
+    return names.some((n) => Object.hasOwn(language.arithmetic, n) || knownFunction(n, count, env) !== null);
+  };
+  const path = segments(code.callee);
+  if (code.callee.kind === 'name' && env.isLocalFunction(code.callee.text)) return false;
+  if (path) {
+    if (code.args.length === 1 && castType(path, spelled(code.callee, env), env)) return true;
+    const library = libraryName(path, env);
+    if (library && known(library.name, code.args.length)) return true;
+  }
+  return code.callee.kind === 'member' && env.language.methods && known(code.callee.name, code.args.length + 1);
 }

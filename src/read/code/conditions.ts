@@ -1,8 +1,7 @@
 /** Choices as piecewise expressions. Logical operators become nested choices, which is exact. */
 import type { Expression, Span } from '../../expression/index.ts';
 import { Declined } from '../../outcome.ts';
-import type { Environment } from './environment.ts';
-import type { Meaning } from './meaning.ts';
+import type { Environment, Meaning } from './environment.ts';
 import { isComparison, operatorMeaning } from './operators.ts';
 import type { Code } from './syntax.ts';
 import { combine } from './types.ts';

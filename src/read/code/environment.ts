@@ -1,7 +1,13 @@
 /** What surrounds an expression while it is read: language, declared types, imports, local names, and remarks to hand back. */
-import type { Span } from '../../expression/index.ts';
+import type { Expression, Span } from '../../expression/index.ts';
 import type { CodeLanguage } from './languages/language.ts';
 import type { ValueType } from './types.ts';
+
+/** What a piece of code means, and the machine type it has. */
+export interface Meaning {
+  readonly expression: Expression;
+  readonly type: ValueType;
+}
 
 /** Something the reader did that a careful user wants to know. */
 export interface Remark {

@@ -1,20 +1,16 @@
 /** Neutral code -> expression. Reads what the language would compute, in exact arithmetic; what it cannot be sure of it declines. */
-import { build, type Expression, Q, type Rational, type Span } from '../../expression/index.ts';
+import { build, type Expression, type Span } from '../../expression/index.ts';
 import { Declined } from '../../outcome.ts';
 import { readCall, readMember, readName } from './calls.ts';
 import { choose } from './conditions.ts';
-import type { Environment } from './environment.ts';
+import { divide, floorDivide, languageName, literalInteger } from './division.ts';
+import type { Environment, Meaning } from './environment.ts';
 import { readLiteral } from './literals.ts';
 import { operatorMeaning } from './operators.ts';
 import type { BinaryCode, Code, LiteralCode } from './syntax.ts';
 import { combine, declaredType, floating, INTEGER, UNKNOWN, type ValueType } from './types.ts';
 
-export interface Meaning {
-  readonly expression: Expression;
-  readonly type: ValueType;
-}
-
-export const spanOf = (code: { readonly start: number; readonly end: number }): Span => ({ start: code.start, end: code.end });
+const spanOf = (code: { readonly start: number; readonly end: number }): Span => ({ start: code.start, end: code.end });
 const at = <T extends Expression>(expression: T, span: Span): T => ({ ...expression, span });
 const sourceOf = (code: Code, env: Environment): string => env.text.slice(code.start, code.end).replace(/\s+/g, '');
 
@@ -106,57 +102,6 @@ function unaryMeaning(operator: string, operand: Code, span: Span, env: Environm
     default:
       throw new Declined('unreadable', `The operator ${operator} is no arithmetic; select an expression without it.`, span);
   }
-}
-
-/** The exact value of an expression of integer literals; null otherwise. */
-export function literalInteger(e: Expression): bigint | null {
-  const all = (items: readonly Expression[], f: (a: bigint, b: bigint) => bigint, start: bigint): bigint | null => {
-    let total = start;
-    for (const item of items) {
-      const value = literalInteger(item);
-      if (value === null) return null;
-      total = f(total, value);
-    }
-    return total;
-  };
-  switch (e.kind) {
-    case 'number':
-      return Q.isInteger(e.value) ? e.value.num : null;
-    case 'negation': {
-      const value = literalInteger(e.operand);
-      return value === null ? null : -value;
-    }
-    case 'sum':
-      return all(e.terms, (a, b) => a + b, 0n);
-    case 'product':
-      return all(e.factors, (a, b) => a * b, 1n);
-    default:
-      return null;
-  }
-}
-
-const FAMILY_NAMES: Readonly<Record<string, string>> = { c: 'C', cpp: 'C++', csharp: 'C#', java: 'Java', go: 'Go', rust: 'Rust', fortran: 'Fortran', glsl: 'GLSL', hlsl: 'HLSL', kotlin: 'Kotlin', swift: 'Swift', python: 'Python', javascript: 'JavaScript', julia: 'Julia', matlab: 'MATLAB', r: 'R' };
-export const languageName = (env: Environment): string => FAMILY_NAMES[env.language.family] ?? env.language.family;
-
-/** a/b as the language computes it. */
-export function divide(a: Meaning, b: Meaning, span: Span, env: Environment): Meaning {
-  const quotient: Expression = { kind: 'quotient', numerator: a.expression, denominator: b.expression, span };
-  if (a.type.kind !== 'integer' || b.type.kind !== 'integer') return { expression: quotient, type: combine(a.type, b.type) };
-  const { integerQuotient } = env.language;
-  if (integerQuotient === 'exact') return { expression: quotient, type: floating(env.language.literalFormat, 'language', true) };
-  const [top, bottom] = [literalInteger(a.expression), literalInteger(b.expression)];
-  if (integerQuotient === 'context' && a.type.flexible && b.type.flexible) return { expression: quotient, type: { ...INTEGER, flexible: true, pending: true } };
-  if (top === null || bottom === null) throw new Declined('bad-request', `Both sides of this division are integers, so ${languageName(env)} drops the fraction; make one of them a floating-point number.`, span);
-  if (bottom === 0n) throw new Declined('bad-request', 'This divides an integer by zero.', span);
-  const whole = top / bottom;
-  if (whole * bottom !== top) env.remark(span, `${top}/${bottom} divides integers: ${languageName(env)} makes it ${whole}. Write ${top}.0/${bottom} for the fraction.`);
-  return { expression: { kind: 'number', value: Q.rational(whole), written: env.text.slice(span.start, span.end), span }, type: { ...INTEGER, flexible: true } };
-}
-
-function floorDivide(a: Meaning, b: Meaning, span: Span): Meaning {
-  const [top, bottom] = [literalInteger(a.expression), literalInteger(b.expression)];
-  if (top === null || bottom === null || bottom === 0n) throw new Declined('unreadable', 'A floor division is not smooth; use a plain division.', span);
-  return { expression: { kind: 'number', value: Q.rational(Q.floor(Q.rational(top, bottom))), span }, type: { ...INTEGER, flexible: true } };
 }
 
 function castMeaning(type: string, operand: Code, span: Span, env: Environment, read: (code: Code) => Meaning): Meaning {
@@ -256,5 +201,3 @@ function productOf(head: Code, steps: readonly Step[], env: Environment, read: (
   }
   return whole;
 }
-
-export type { Rational };

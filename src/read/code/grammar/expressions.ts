@@ -48,6 +48,7 @@ const comparison: Rule = (raw, at) => {
 const unary: Rule = (raw, at) => {
   const operand = child(raw, 'argument') ?? child(raw, 'operand') ?? namedChildren(raw)[0];
   const operator = operatorOf(raw);
+  if (operator && /^(?:\+\+|--)$/.test(at.textOf(operator))) return update(raw, at);
   return operand && operator && operator.start < operand.start ? { kind: 'unary', operator: at.textOf(operator), operand: at.lower(operand), ...place(raw) } : opaque(raw, at);
 };
 
@@ -175,6 +176,12 @@ const inner: Rule = (raw, at) => {
   return first ? at.lower(first) : opaque(raw, at);
 };
 
+/** `x++` gives its variable another value. */
+const update: Rule = (raw, at) => {
+  const target = child(raw, 'argument') ?? namedChildren(raw)[0];
+  return target ? { kind: 'assign', target: at.lower(target), operator: '++', value: { kind: 'opaque', what: 'changed value', parts: [], ...place(raw) }, type: '', ...place(raw) } : opaque(raw, at);
+};
+
 const text: Rule = (raw) => ({ kind: 'opaque', what: 'text', parts: [], ...place(raw) });
 
 /** `-1` alone is a unary; C# names its operators without a field. */
@@ -231,6 +238,10 @@ export const EXPRESSIONS: Readonly<Record<string, Rule>> = {
     return operand ? { kind: 'unary', operator: at.textOf(raw).slice(0, 1), operand: at.lower(operand), ...place(raw) } : opaque(raw, at);
   },
   not_operator: not,
+  update_expression: update,
+  postfix_unary_expression: (raw, at) => (/(?:\+\+|--)$/.test(at.textOf(raw)) ? update(raw, at) : inner(raw, at)),
+  inc_statement: update,
+  dec_statement: update,
   template_function: templated,
   template_method: templated,
   generic_function: templated,

@@ -1,0 +1,187 @@
+/** What is visible around a place: names, types, imports, constants, the enclosing function. */
+import { type Expression, freeSymbols, type Span } from '../../expression/index.ts';
+import { attempt } from '../../outcome.ts';
+import type { Environment, Imports, Remark } from './environment.ts';
+import { type CodeLanguage, } from './languages/index.ts';
+import { readMeaning } from './meaning.ts';
+import type { AssignCode, Code, DeclareCode, FunctionCode, LambdaCode } from './syntax.ts';
+import { pathTo, walkCode } from './syntax.ts';
+import { declaredType, floating, INTEGER, UNKNOWN, type ValueType } from './types.ts';
+
+export interface Declaration {
+  readonly name: string;
+  readonly type: string;
+  readonly value: Code | null;
+  readonly constant: boolean;
+  readonly kind: 'variable' | 'parameter' | 'function';
+  readonly span: Span;
+  /** Part of the file's own level or of a class, not of a function around the place. */
+  readonly outer: boolean;
+}
+
+export interface Scope {
+  readonly declarations: readonly Declaration[];
+  readonly imports: Imports;
+  readonly importNodes: readonly { readonly path: string; readonly span: Span }[];
+  readonly enclosing: FunctionCode | LambdaCode | null;
+  readonly statement: Span | null;
+  /** The name that the value of the statement around the place goes to. */
+  readonly target: string | null;
+  /** How often each plain name is assigned to in the whole document. */
+  readonly assignments: ReadonlyMap<string, number>;
+}
+
+const targetName = (code: AssignCode): string | null => (code.target.kind === 'name' ? code.target.text : null);
+
+function declarationOf(code: Code, outer: boolean): readonly Declaration[] {
+  const span = { start: code.start, end: code.end };
+  switch (code.kind) {
+    case 'declare':
+      if (code.value?.kind === 'lambda') return [{ name: code.name, type: code.type, value: code.value, constant: code.constant, kind: 'function', span, outer }];
+      return [{ name: code.name, type: code.type, value: code.value, constant: code.constant, kind: 'variable', span, outer }];
+    case 'assign': {
+      const name = targetName(code);
+      if (name === null || !/^:?=$/.test(code.operator)) return [];
+      return [{ name, type: code.type, value: code.value, constant: false, kind: code.value.kind === 'lambda' ? 'function' : 'variable', span, outer }];
+    }
+    case 'function':
+      return [{ name: code.name, type: code.returns, value: null, constant: true, kind: 'function', span, outer }];
+    default:
+      return [];
+  }
+}
+
+/** Declarations directly inside a node, through blocks that open no scope of their own for this purpose (several declarators, classes, namespaces). */
+function* directly(code: Code): Generator<Code> {
+  const stack: Code[] = code.kind === 'block' || code.kind === 'opaque' ? [...(code.kind === 'block' ? code.body : code.parts)].reverse() : [];
+  for (let here = stack.pop(); here; here = stack.pop()) {
+    if (here.kind === 'block' || here.kind === 'opaque') {
+      const parts = here.kind === 'block' ? here.body : here.parts;
+      for (let i = parts.length - 1; i >= 0; i -= 1) {
+        const part = parts[i];
+        if (part) stack.push(part);
+      }
+    } else yield here;
+  }
+}
+
+function importsOf(root: Code): { readonly imports: Imports; readonly nodes: readonly { readonly path: string; readonly span: Span }[] } {
+  const modules = new Map<string, string>();
+  const names = new Map<string, { readonly module: string; readonly original: string }>();
+  const open: string[] = [];
+  const nodes: { readonly path: string; readonly span: Span }[] = [];
+  for (const code of directly(root.kind === 'block' ? root : { kind: 'block', body: [root], start: root.start, end: root.end })) {
+    if (code.kind !== 'import') continue;
+    nodes.push({ path: code.path, span: { start: code.start, end: code.end } });
+    const path = code.path.replaceAll('::', '.');
+    if (code.alias !== null) modules.set(code.alias, path);
+    else if (code.names.length === 0) modules.set(path.split(/[./]/).at(-1) ?? path, path);
+    for (const [original, local] of code.names) {
+      if (original === '*') open.push(path);
+      else names.set(local, { module: path, original });
+    }
+  }
+  return { imports: { modules, names, open }, nodes };
+}
+
+export function scopeAt(root: Code, start: number, end: number): Scope {
+  const path = pathTo(root, start, end);
+  const declarations: Declaration[] = [];
+  let enclosing: FunctionCode | LambdaCode | null = null;
+  let statement: Span | null = null;
+  let target: string | null = null;
+  path.forEach((code, i) => {
+    const outer = enclosing === null;
+    if (code.kind === 'function' || code.kind === 'lambda') {
+      enclosing = code;
+      for (const p of code.parameters) declarations.push({ name: p.name, type: p.type, value: null, constant: false, kind: 'parameter', span: { start: p.start, end: p.end }, outer: false });
+    }
+    if (code.kind === 'block' || code.kind === 'opaque') for (const inner of directly(code)) declarations.push(...declarationOf(inner, outer));
+    else if (i === 0) declarations.push(...declarationOf(code, true));
+    const parent = path[i - 1];
+    if ((parent === undefined || parent.kind === 'block' || parent.kind === 'function') && code.kind !== 'block' && code.kind !== 'function') statement = { start: code.start, end: code.end };
+    if (code.kind === 'declare') target = code.name;
+    if (code.kind === 'assign') target = targetName(code);
+  });
+  const assignments = new Map<string, number>();
+  for (const code of walkCode(root)) {
+    const name = code.kind === 'declare' && code.value ? code.name : code.kind === 'assign' ? targetName(code) : null;
+    if (name !== null) assignments.set(name, (assignments.get(name) ?? 0) + 1);
+  }
+  const { imports, nodes } = importsOf(root);
+  return { declarations, imports, importNodes: nodes, enclosing, statement, target, assignments };
+}
+
+/** The environment of a place. Types of names without a written type are those of their values. */
+export function environmentAt(scope: Scope, text: string, language: CodeLanguage, remarks: Remark[]): Environment {
+  const byName = new Map<string, Declaration>();
+  const fold = (name: string): string => (language.foldCase ? name.toLowerCase() : name);
+  for (const declaration of scope.declarations) byName.set(fold(declaration.name), declaration);
+  const spelling = new Map<string, string>();
+  const types = new Map<string, ValueType>();
+  const hidden = language.family === 'fortran' && !/\bimplicit\s+none\b/i.test(text);
+  const environment: Environment = {
+    language,
+    text,
+    imports: scope.imports,
+    isLocal: (name) => byName.has(fold(name)),
+    isLocalFunction: (name) => byName.get(fold(name))?.kind === 'function',
+    remark: (span, message) => remarks.push({ span, message }),
+    spell: (name) => {
+      if (!language.foldCase) return name;
+      const known = spelling.get(fold(name));
+      if (known !== undefined) return known;
+      spelling.set(fold(name), name);
+      return name;
+    },
+    typeOf: (name) => {
+      const key = fold(name);
+      const known = types.get(key);
+      if (known) return known;
+      // A value that names itself ends here.
+      types.set(key, UNKNOWN);
+      const declaration = byName.get(key);
+      let type: ValueType = UNKNOWN;
+      if (declaration) {
+        type = declaredType(declaration.type, language);
+        if (type.kind === 'unknown' && declaration.value && /^(?:|auto|var|let|val|const|:=|#define|const auto|constexpr auto|implicit_type)$/.test(declaration.type.trim())) type = typeOfValue(declaration.value, environment);
+      } else if (hidden && language.implicitIntegers && /^[i-n]/i.test(name)) type = INTEGER;
+      types.set(key, type);
+      return type;
+    },
+  };
+  return environment;
+}
+
+function typeOfValue(value: Code, environment: Environment): ValueType {
+  const quiet: Environment = { ...environment, remark: () => undefined };
+  const read = attempt(() => readMeaning(value, quiet));
+  if (!read.ok) return UNKNOWN;
+  const { type } = read.value;
+  if (type.kind === 'integer') return { ...INTEGER };
+  return type.kind === 'float' ? floating(type.format, type.evidence === 'suffix' ? 'declared' : type.evidence, false) : type;
+}
+
+export interface NearbyConstant {
+  readonly name: string;
+  readonly value: Expression;
+  readonly span: Span;
+}
+
+/** Names near the place whose value is a constant: declared constant, or assigned once to a number. */
+export function constantsOf(scope: Scope, environment: Environment, macro: (start: number, end: number) => Code | null): readonly NearbyConstant[] {
+  const found = new Map<string, NearbyConstant>();
+  for (const declaration of scope.declarations) {
+    if (declaration.kind !== 'variable' || !declaration.value) continue;
+    if ((scope.assignments.get(declaration.name) ?? 0) > 1) continue;
+    const code = declaration.value.kind === 'opaque' && declaration.value.what === 'macro' ? macro(declaration.value.start, declaration.value.end) : declaration.value;
+    if (!code || code.kind === 'lambda' || code.kind === 'list') continue;
+    const read = attempt(() => readMeaning(code, { ...environment, remark: () => undefined }));
+    if (!read.ok || read.value.expression.kind === 'apply') continue;
+    const free = freeSymbols(read.value.expression);
+    if (free.length === 0 || free.every((name) => found.has(name))) found.set(declaration.name, { name: declaration.name, value: read.value.expression, span: declaration.span });
+  }
+  return [...found.values()];
+}
+
+export type { DeclareCode };

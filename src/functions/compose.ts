@@ -1,5 +1,6 @@
 /** Short writing for the bodies of descriptions. Numbers are lifted, zeros and ones dropped, rational factors multiplied; nothing else is simplified. */
 import { build, type Expression, Q, type Rational } from '../expression/index.ts';
+import { asRational } from './exactForms.ts';
 
 export type Value = Expression | Rational | number | bigint;
 
@@ -83,6 +84,14 @@ export const exp = (v: Value): Expression => {
 export const sin = (v: Value): Expression => call('sin', v);
 export const cos = (v: Value): Expression => call('cos', v);
 export const gamma = (v: Value): Expression => call('gamma', v);
+
+/** 1/Gamma(v), zero at the poles of Gamma. */
+export function reciprocalGamma(v: Value): Expression {
+  const e = lift(v);
+  const exact = asRational(e);
+  if (exact && Q.isInteger(exact) && exact.num <= 0n) return build.number(0);
+  return over(1, gamma(e));
+}
 
 /** Rational times rational stays rational, anything else becomes a tree. */
 export function scaled(a: Rational | Expression, b: Rational | Expression): Rational | Expression {

@@ -1,8 +1,11 @@
 /** Bessel functions, Airy, Struve, Kelvin. */
 import { build, type Expression } from '../../expression/index.ts';
 import type { FunctionDescription } from '../description.ts';
+import { airyEquation, airyLocal, airyValue } from './airy.ts';
 import { besselILocal, besselJLocal, besselKLocal, besselYLocal, cylinderDerivative, cylinderEquation, cylinderValue } from './cylinder.ts';
+import { kelvinDerivative, kelvinEquation, kelvinLocal, kelvinValue } from './kelvin.ts';
 import { besselNames as n } from './names.ts';
+import { struveDerivative, struveEquation, struveLocal } from './struve.ts';
 
 const { call, constant, difference, number, product, quotient, squareRoot, sum } = build;
 const half = quotient(number(1), number(2));
@@ -22,14 +25,14 @@ export const besselFunctions: readonly FunctionDescription[] = [
   { id: 'sphericalY', title: 'spherical Bessel function of the second kind', arity: 2, names: n.sphericalY, definition: spherical('besselY'), domain: 'x > 0', source: 'DLMF 10.47.4' },
   { id: 'sphericalI', title: 'modified spherical Bessel function of the first kind', arity: 2, names: n.sphericalI, definition: spherical('besselI'), source: 'DLMF 10.47.7' },
   { id: 'sphericalK', title: 'modified spherical Bessel function of the second kind', arity: 2, names: n.sphericalK, definition: spherical('besselK'), domain: 'x > 0', source: 'DLMF 10.47.9' },
-  { id: 'airyAi', title: 'Airy function Ai', arity: 1, names: n.airyAi, derivative: ([x = number(0)]) => call('airyAiPrime', x), source: 'DLMF 9.2' },
-  { id: 'airyBi', title: 'Airy function Bi', arity: 1, names: n.airyBi, derivative: ([x = number(0)]) => call('airyBiPrime', x), source: 'DLMF 9.2' },
-  { id: 'airyAiPrime', title: "derivative of the Airy function Ai", arity: 1, names: n.airyAiPrime, derivative: ([x = number(0)]) => product(x, call('airyAi', x)), source: 'DLMF 9.2.1' },
-  { id: 'airyBiPrime', title: "derivative of the Airy function Bi", arity: 1, names: n.airyBiPrime, derivative: ([x = number(0)]) => product(x, call('airyBi', x)), source: 'DLMF 9.2.1' },
-  { id: 'struveH', title: 'Struve function H', arity: 2, names: n.struveH, source: 'DLMF 11.2.1' },
-  { id: 'struveL', title: 'modified Struve function L', arity: 2, names: n.struveL, source: 'DLMF 11.2.2' },
-  { id: 'kelvinBer', title: 'Kelvin function ber', arity: 2, names: n.kelvinBer, source: 'DLMF 10.61.1' },
-  { id: 'kelvinBei', title: 'Kelvin function bei', arity: 2, names: n.kelvinBei, source: 'DLMF 10.61.1' },
-  { id: 'kelvinKer', title: 'Kelvin function ker', arity: 2, names: n.kelvinKer, domain: 'x > 0', source: 'DLMF 10.61.2' },
-  { id: 'kelvinKei', title: 'Kelvin function kei', arity: 2, names: n.kelvinKei, domain: 'x > 0', source: 'DLMF 10.61.2' },
+  { id: 'airyAi', title: 'Airy function Ai', arity: 1, names: n.airyAi, local: airyLocal('Ai'), value: airyValue('Ai'), equation: airyEquation('Ai'), derivative: ([x = number(0)]) => call('airyAiPrime', x), source: 'DLMF 9.2' },
+  { id: 'airyBi', title: 'Airy function Bi', arity: 1, names: n.airyBi, local: airyLocal('Bi'), value: airyValue('Bi'), equation: airyEquation('Bi'), derivative: ([x = number(0)]) => call('airyBiPrime', x), source: 'DLMF 9.2' },
+  { id: 'airyAiPrime', title: "derivative of the Airy function Ai", arity: 1, names: n.airyAiPrime, local: airyLocal('AiPrime'), value: airyValue('AiPrime'), equation: airyEquation('AiPrime'), derivative: ([x = number(0)]) => product(x, call('airyAi', x)), source: 'DLMF 9.2.1' },
+  { id: 'airyBiPrime', title: "derivative of the Airy function Bi", arity: 1, names: n.airyBiPrime, local: airyLocal('BiPrime'), value: airyValue('BiPrime'), equation: airyEquation('BiPrime'), derivative: ([x = number(0)]) => product(x, call('airyBi', x)), source: 'DLMF 9.2.1' },
+  { id: 'struveH', title: 'Struve function H', arity: 2, names: n.struveH, local: struveLocal('H'), derivative: struveDerivative('H'), equation: struveEquation('H'), source: 'DLMF 11.2.1' },
+  { id: 'struveL', title: 'modified Struve function L', arity: 2, names: n.struveL, local: struveLocal('L'), derivative: struveDerivative('L'), equation: struveEquation('L'), source: 'DLMF 11.2.2' },
+  { id: 'kelvinBer', title: 'Kelvin function ber', arity: 2, names: n.kelvinBer, local: kelvinLocal('Ber'), value: kelvinValue('Ber'), derivative: kelvinDerivative('Ber'), equation: kelvinEquation('Ber'), source: 'DLMF 10.61.1' },
+  { id: 'kelvinBei', title: 'Kelvin function bei', arity: 2, names: n.kelvinBei, local: kelvinLocal('Bei'), value: kelvinValue('Bei'), derivative: kelvinDerivative('Bei'), equation: kelvinEquation('Bei'), source: 'DLMF 10.61.1' },
+  { id: 'kelvinKer', title: 'Kelvin function ker', arity: 2, names: n.kelvinKer, local: kelvinLocal('Ker'), value: kelvinValue('Ker'), derivative: kelvinDerivative('Ker'), equation: kelvinEquation('Ker'), domain: 'x > 0', source: 'DLMF 10.61.2' },
+  { id: 'kelvinKei', title: 'Kelvin function kei', arity: 2, names: n.kelvinKei, local: kelvinLocal('Kei'), value: kelvinValue('Kei'), derivative: kelvinDerivative('Kei'), equation: kelvinEquation('Kei'), domain: 'x > 0', source: 'DLMF 10.61.2' },
 ];

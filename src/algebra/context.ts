@@ -17,6 +17,9 @@ export interface Context {
   readonly isZero: (a: Element) => Truth;
   /** A tree as an element. */
   readonly read: (e: Expression) => Element;
+  readonly call: (id: string, args: readonly Element[]) => Element;
+  /** Sign of an element without parameters by balls; null where it stays open or is not real. */
+  readonly signOfNumber: (a: Element) => -1 | 1 | null;
   /** Whether the assumptions make the symbol an integer. */
   readonly isInteger: (name: string) => boolean;
 }
@@ -59,7 +62,20 @@ export function callKernel(ctx: Context, id: string, args: readonly Element[]): 
     });
     if (same) return k;
   }
-  return ctx.table.intern(key, () => ({ shape: { kind: 'call', id, args } }));
+  const kernel = ctx.table.intern(key, () => ({ shape: { kind: 'call', id, args } }));
+  const partner = PARTNERS[id];
+  const other = partner ? ctx.table.find(`${partner}(${args.map(elementKey).join(', ')})`) : undefined;
+  if (other) {
+    const [sine, cosine] = id === 'sin' || id === 'cosh' ? [kernel.index, other.index] : [other.index, kernel.index];
+    ctx.table.circles.push({ sine, cosine, factor: id === 'sin' || id === 'cos' ? -1n : 1n });
+  }
+  return kernel;
+}
+
+const PARTNERS: Readonly<Record<string, string>> = { sin: 'cos', cos: 'sin', sinh: 'cosh', cosh: 'sinh' };
+
+export function applyKernel(ctx: Context, name: string, derivatives: readonly number[], args: readonly Element[]): Kernel {
+  return ctx.table.intern(`@${name}[${derivatives.join(',')}](${args.map(elementKey).join(', ')})`, () => ({ shape: { kind: 'apply', name, derivatives, args } }));
 }
 
 export const minus = (ctx: Context, a: Element, b: Element): Element => addElements(ctx.table, a, negateElement(b));

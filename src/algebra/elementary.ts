@@ -135,6 +135,14 @@ function angleWith(ctx: Context, value: Element, f: (r: Rational) => Element): R
 const isNumericAlgebraic = (ctx: Context, a: Element): boolean =>
   isQuotient(a) && a.denominator.length === 0 && [...a.monomial.kernels, ...a.numerator.flatMap((t) => t.monomial.kernels)].every((k) => ctx.table.relations[k]?.numeric === true);
 
+/** Numbers with |a| > 1 on the axis of the cut: there a function takes the value from one side, which need not be odd. */
+function mayLieOnCut(ctx: Context, a: Element, axis: 'real' | 'imaginary'): boolean {
+  if (!isNumber(ctx, a)) return false;
+  const { re, im } = byImaginaryUnit(ctx, a);
+  if (!isZeroRational(axis === 'real' ? im : re)) return false;
+  return ctx.signOfNumber(plus(ctx, Q.ONE, negateElement(squared(ctx, axis === 'real' ? re : im)))) !== 1;
+}
+
 function arcSine(ctx: Context, a: Element): Element {
   if (isZeroRational(a)) return Q.ZERO;
   const r = rationalOf(a);
@@ -146,7 +154,7 @@ function arcSine(ctx: Context, a: Element): Element {
     const mirrored = angleWith(ctx, negateElement(a), (q) => sineOfPi(ctx, q));
     if (mirrored) return scaleElement(pi(ctx), Q.negate(mirrored));
   }
-  if (isNegativeForm(a)) return negateElement(arcSine(ctx, negateElement(a)));
+  if (isNegativeForm(a) && !mayLieOnCut(ctx, a, 'real')) return negateElement(arcSine(ctx, negateElement(a)));
   return opaque(ctx, 'asin', [a]);
 }
 function arcCosine(ctx: Context, a: Element): Element {
@@ -167,7 +175,7 @@ function arcTangent(ctx: Context, a: Element): Element {
     const mirrored = angleWith(ctx, negateElement(a), tangent);
     if (mirrored) return scaleElement(pi(ctx), Q.negate(mirrored));
   }
-  if (isNegativeForm(a)) return negateElement(arcTangent(ctx, negateElement(a)));
+  if (isNegativeForm(a) && !mayLieOnCut(ctx, a, 'imaginary')) return negateElement(arcTangent(ctx, negateElement(a)));
   return opaque(ctx, 'atan', [a]);
 }
 

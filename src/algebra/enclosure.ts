@@ -71,6 +71,8 @@ export function createEvaluator(
         const cosine = c.cos(angle);
         return cosine ? c.add(cosine, cosine) : null;
       }
+      case 'apply':
+        return null;
       case 'call': {
         const args: ComplexBall[] = [];
         for (const a of shape.args) {

@@ -29,7 +29,20 @@ export function createField(assumptions: readonly Assumption[], budget: Budget, 
   const needed = new Set<string>();
   const zero = createZeroTest(table, describe, facts, (a) => deepZero(ctx, a));
   const signs = createSignRules(table, facts, (k) => signOfOpaque(k));
-  const ctx: Context = { table, budget, signs, describe, isZero: (a) => zero.isZero(a), isInteger: (name) => facts.isInteger(name), read: (e) => fromExpression(ctx, e) };
+  const ctx: Context = {
+    table,
+    budget,
+    signs,
+    describe,
+    isZero: (a) => zero.isZero(a),
+    isInteger: (name) => facts.isInteger(name),
+    read: (e) => fromExpression(ctx, e),
+    call: (id, args) => callFunction(ctx, id, args),
+    signOfNumber(a) {
+      const s = constantSign(a);
+      return s === POSITIVE ? 1 : s === NEGATIVE ? -1 : null;
+    },
+  };
 
   /** log and call kernels: by balls where they are constants, by their arguments' signs where a rule is known. */
   function signOfOpaque(k: Kernel): SignSet {

@@ -1,7 +1,7 @@
 /** Trees to elements. */
 import { Q, type Expression } from '../expression/index.ts';
 import { Declined } from '../outcome.ts';
-import { constantKernel, expKernel, imaginaryKernel, isZeroRational, kernelElement, parameterKernel, rationalOf, undecided, type Context } from './context.ts';
+import { applyKernel, constantKernel, expKernel, imaginaryKernel, isZeroRational, kernelElement, parameterKernel, rationalOf, undecided, type Context } from './context.ts';
 import { callFunction } from './functions.ts';
 import { absolute, divideElements, generalPower, rationalPower } from './powers.ts';
 import { addElements, multiplyElements, negateElement } from './quotient.ts';
@@ -48,6 +48,8 @@ export function fromExpression(ctx: Context, e: Expression, depth = 0): Element 
       return realRoot(ctx, inner(e.radicand), inner(e.degree));
     case 'call':
       return callFunction(ctx, e.function, e.args.map(inner));
+    case 'apply':
+      return kernelElement(ctx, applyKernel(ctx, e.name, e.derivatives, e.args.map(inner)));
     default:
       throw undecided('A coefficient here is not a number or a formula in parameters; give it a closed form.');
   }

@@ -21,7 +21,9 @@ export type KernelShape =
   | { readonly kind: 'abs'; readonly argument: Element }
   /** 2 cos(pi * angle) with 0 < angle < 1/2: an algebraic integer. */
   | { readonly kind: 'cosine'; readonly angle: Rational }
-  | { readonly kind: 'call'; readonly id: string; readonly args: readonly Element[] };
+  | { readonly kind: 'call'; readonly id: string; readonly args: readonly Element[] }
+  /** An unspecified function or one of its derivatives: real for real arguments, free of relations. */
+  | { readonly kind: 'apply'; readonly name: string; readonly derivatives: readonly number[]; readonly args: readonly Element[] };
 
 export interface Relation {
   /** kernel^period = value; exponents are kept in [0, period). */
@@ -41,10 +43,19 @@ export interface Kernel {
 }
 
 /** Grows while a field is used; indices stay valid. */
+/** sine^2 = constant + factor * cosine^2: sin^2 = 1 - cos^2, cosh^2 = 1 + sinh^2. */
+export interface Circle {
+  readonly sine: number;
+  readonly cosine: number;
+  readonly factor: 1n | -1n;
+}
+
 export interface KernelTable {
   readonly kernels: readonly Kernel[];
   /** Relations by kernel index, for the inner loops. */
   readonly relations: readonly (Relation | null)[];
+  /** Quadratic relations between two kernels; applied where they shorten a sum, and in full by the zero test. */
+  readonly circles: Circle[];
   /** The kernel of this key, made on first use. */
   intern(key: string, make: () => { readonly shape: KernelShape; readonly relation?: Relation | null }): Kernel;
   find(key: string): Kernel | undefined;
@@ -58,6 +69,7 @@ export function createKernelTable(check: () => void): KernelTable {
   return {
     kernels,
     relations,
+    circles: [],
     check,
     find: (key) => byKey.get(key),
     intern(key, make) {

@@ -92,6 +92,9 @@ export function rationalPower(ctx: Context, a: Element, r: Rational): Element {
       if (kernel.relation && !kernel.relation.pure) {
         result = times(ctx, result, radicandPower(ctx, kernelElement(ctx, kernel, e), exponent));
       } else result = times(ctx, result, kernelElement(ctx, kernel, multiplyExponents(e, exponent)));
+    } else if (isWhole(e) && (sign & ~(NEGATIVE | NIL)) === 0) {
+      result = times(ctx, result, radicandRationalPower(ctx, negateElement(kernelElement(ctx, kernel)), Q.multiply(r, Q.rational(e))));
+      if (e % 2 !== 0) negative = !negative;
     } else if (isWhole(e) && isRealSet(sign) && kernel.shape.kind !== 'exp' && kernel.shape.kind !== 'power') {
       const even = e % 2 === 0 ? e : e - 1;
       if (even !== 0) result = times(ctx, result, rationalPower(ctx, absolute(ctx, kernelElement(ctx, kernel)), Q.multiply(r, Q.rational(even))));
@@ -251,7 +254,10 @@ export function logarithm(ctx: Context, a: Element): Element {
     else if (shape.kind === 'integer') result = plus(ctx, result, multiple(logOfRational(ctx, Q.rational(shape.value)), e));
     else if (shape.kind === 'radicand' && isNonNegative(sign)) result = plus(ctx, result, multiple(logarithm(ctx, shape.base), e));
     else if (isNonNegative(sign)) result = plus(ctx, result, multiple(kernelElement(ctx, logKernel(ctx, kernelElement(ctx, kernel))), e));
-    else if (isWhole(e) && isRealSet(sign) && shape.kind !== 'exp' && shape.kind !== 'power') {
+    else if (isWhole(e) && (sign & ~(NEGATIVE | NIL)) === 0) {
+      result = plus(ctx, result, multiple(kernelElement(ctx, logKernel(ctx, negateElement(kernelElement(ctx, kernel)))), e));
+      if (e % 2 !== 0) negative = !negative;
+    } else if (isWhole(e) && isRealSet(sign) && shape.kind !== 'exp' && shape.kind !== 'power') {
       const even = e % 2 === 0 ? e : e - 1;
       if (even !== 0) result = plus(ctx, result, multiple(logarithm(ctx, absolute(ctx, kernelElement(ctx, kernel))), even));
       if (even !== e) take(kernelElement(ctx, kernel));

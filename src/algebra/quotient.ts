@@ -92,6 +92,7 @@ export function normalise(table: KernelTable, content: Rational, monomial: Monom
   let n = reduceByRelations(table, numerator);
   let d = denominator;
   let mayCancel = cancel;
+  if (table.circles.length > 0 && n.length > 1) n = shortenByCircles(table, n);
   for (;;) {
     if (n.length === 0 || c.num === 0n) return Q.ZERO;
     const integer = contentOf(n);
@@ -121,6 +122,38 @@ export function normalise(table: KernelTable, content: Rational, monomial: Monom
     if (cancelled.changed) return normalise(table, c, m, cancelled.numerator, cancelled.denominator, false);
   }
   return raw(c, m, n, d);
+}
+
+/** Applies sin^2 + cos^2 = 1 and its kin one way or the other where that leaves fewer terms. */
+function shortenByCircles(table: KernelTable, f: Polynomial): Polynomial {
+  let best = f;
+  for (const circle of table.circles) {
+    const involved = best.some((t) => compareExponents(exponentIn(t.monomial, circle.sine), 2) >= 0 || compareExponents(exponentIn(t.monomial, circle.cosine), 2) >= 0);
+    if (!involved) continue;
+    // sine^2 = 1 + factor cosine^2, hence cosine^2 = factor (sine^2 - 1).
+    const bySine = replaceSquare(best, circle.sine, [1n, circle.factor], circle.cosine);
+    if (bySine.length < best.length) best = bySine;
+    const byCosine = replaceSquare(best, circle.cosine, [-circle.factor, circle.factor], circle.sine);
+    if (byCosine.length < best.length) best = byCosine;
+  }
+  return best;
+}
+
+/** kernel^2 replaced by a + b other^2 throughout. */
+export function replaceSquare(f: Polynomial, kernel: number, [a, b]: readonly [bigint, bigint], other: number): Polynomial {
+  const value: Polynomial = [
+    { monomial: monomialOf(other, 2), coefficient: b },
+    { monomial: UNIT, coefficient: a },
+  ];
+  let result: Polynomial = [];
+  const rest: Term[] = [];
+  for (const t of f) {
+    const e = exponentIn(t.monomial, kernel);
+    const count = isWhole(e) && e >= 2 ? Math.floor(e / 2) : 0;
+    if (count === 0) rest.push(t);
+    else result = combine(result, 1n, multiplyPolynomials([{ monomial: multiplyMonomials(t.monomial, monomialOf(kernel, -2 * count)), coefficient: t.coefficient }], powerOfPolynomial(value, count)), 1n);
+  }
+  return combine(result, 1n, rest, 1n);
 }
 
 /** Exponents of a monomial brought into range; what leaves it becomes content, numerator or denominator. */

@@ -145,6 +145,8 @@ export function createSignRules(table: KernelTable, facts: SignFacts, decide: (k
         const inner = rules.of(k.shape.argument);
         return isNonZero(inner) ? POSITIVE : POSITIVE | NIL;
       }
+      case 'apply':
+        return k.shape.args.every((a) => isRealSet(rules.of(a))) ? REAL : ANY;
       case 'log':
       case 'call':
         return decide(k, rules);

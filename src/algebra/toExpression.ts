@@ -6,7 +6,7 @@ import { linearFactors } from './linearFactors.ts';
 import type { Kernel } from './kernel.ts';
 import { isUnit, monomialKey, type Monomial } from './monomial.ts';
 import { isOnePolynomial, kernelsIn, type Polynomial, type Term } from './polynomial.ts';
-import { addElements, elementKey, isQuotient, multiplyElements, partsOf, scaleElement, type Factor } from './quotient.ts';
+import { addElements, elementKey, isQuotient, multiplyElements, negateElement, partsOf, scaleElement, type Factor } from './quotient.ts';
 import { asElement } from './split.ts';
 import type { Element } from './types.ts';
 
@@ -141,7 +141,16 @@ function writeProduct(ctx: Context, content: Rational, monomial: Monomial, extra
     }
   });
   const polynomialPower = (f: Factor, order: number): void => put(elementKey(asElement(ctx, f.polynomial)), RANK.sum, 1e6 + order, () => writeSum(ctx, Q.ONE, f.polynomial), Q.rational(-f.exponent));
-  denominator.forEach(polynomialPower);
+  let flipped = false;
+  denominator.forEach((f, order) => {
+    // (1 - a^2)^(1/2)/(a^2 - 1) is -(1 - a^2)^(-1/2).
+    const opposite = powers.get(elementKey(negateElement(asElement(ctx, f.polynomial))));
+    if (!opposite) polynomialPower(f, order);
+    else {
+      opposite.exponent = addElements(ctx.table, opposite.exponent, Q.rational(-f.exponent));
+      if (f.exponent % 2 === 1) flipped = !flipped;
+    }
+  });
   const sums: ExtraFactor[] = [];
   for (const x of extra) {
     if (isFactor(x)) polynomialPower(x, 0);
@@ -177,12 +186,12 @@ function writeProduct(ctx: Context, content: Rational, monomial: Monomial, extra
 
   const size = Q.absolute(content);
   if (size.num !== 1n || top.length === 0) {
-    if (bottom.length === 0 && top.length === 0) return numberExpression(content);
+    if (bottom.length === 0 && top.length === 0) return numberExpression(flipped ? Q.negate(content) : content);
     top.unshift(build.number(size.num));
   }
   if (size.den !== 1n) bottom.unshift(build.number(size.den));
   const whole = bottom.length === 0 ? build.product(...top) : build.quotient(build.product(...top), build.product(...bottom));
-  return content.num < 0n ? build.negation(whole) : whole;
+  return content.num < 0n !== flipped ? build.negation(whole) : whole;
 }
 
 const raised = (base: Expression, exponent: Expression, r: Rational): Expression => (Q.isOne(r) ? base : build.power(base, exponent));
@@ -213,7 +222,7 @@ function joinQuotients(ctx: Context, powers: Map<string, Power>, monomial: Monom
     const c = powers.get(elementKey(kernelElement(ctx, partner)));
     const sr = s ? rationalOf(s.exponent) : null;
     const cr = c ? rationalOf(c.exponent) : null;
-    if (!s || !c || !sr || !cr || sr.num <= 0n || cr.num >= 0n) continue;
+    if (!s || !c || !sr || !cr || sr.num <= 0n || cr.num >= 0n || sr.den !== 1n || cr.den !== 1n) continue;
     const common = Q.compare(sr, Q.negate(cr)) < 0 ? sr : Q.negate(cr);
     s.exponent = Q.subtract(sr, common);
     c.exponent = Q.add(cr, common);
@@ -232,6 +241,8 @@ function kernelExpression(ctx: Context, k: Kernel): Expression {
       return build.call('abs', toExpression(ctx, shape.argument));
     case 'call':
       return build.call(shape.id, ...shape.args.map((x) => toExpression(ctx, x)));
+    case 'apply':
+      return { kind: 'apply', name: shape.name, args: shape.args.map((x) => toExpression(ctx, x)), derivatives: shape.derivatives };
     case 'cosine':
       return build.product(build.number(2), build.call('cos', build.quotient(Q.isOne({ num: shape.angle.num, den: 1n }) ? build.constant('pi') : build.product(build.number(shape.angle.num), build.constant('pi')), build.number(shape.angle.den))));
     case 'parameter':

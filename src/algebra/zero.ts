@@ -75,7 +75,7 @@ export function createZeroTest(table: KernelTable, describe: (id: string) => Fun
 
 /** Parameters, pi, radicals of integers and i are algebraically independent but for their relations, which the normal form applies. */
 const isIndependent = (k: Kernel): boolean =>
-  k.shape.kind === 'parameter' || k.shape.kind === 'integer' || k.shape.kind === 'imaginary' || (k.shape.kind === 'constant' && k.shape.name === 'pi');
+  k.shape.kind === 'parameter' || k.shape.kind === 'integer' || k.shape.kind === 'imaginary' || k.shape.kind === 'apply' || (k.shape.kind === 'constant' && k.shape.name === 'pi');
 
 const neverIdenticallyZero = (k: Kernel): boolean => {
   switch (k.shape.kind) {
@@ -100,7 +100,7 @@ export function allKernels(table: KernelTable, a: Element): ReadonlySet<number> 
       else if (shape.kind === 'exp') open.push(shape.unit);
       else if (shape.kind === 'power') open.push(shape.base, shape.unit);
       else if (shape.kind === 'log' || shape.kind === 'abs') open.push(shape.argument);
-      else if (shape.kind === 'call') open.push(...shape.args);
+      else if (shape.kind === 'call' || shape.kind === 'apply') open.push(...shape.args);
     }
   }
   return found;

@@ -42,7 +42,7 @@ const bundles = [
   { ...forBrowser, entryPoints: ['src/editor/main.web.ts'], outfile: 'dist/extension.web.js' },
   { ...forNode, entryPoints: ['src/worker/node.ts'], outfile: 'dist/worker.js' },
   { ...forBrowser, format: 'iife', plugins: [noNodeModules], entryPoints: ['src/worker/web.ts'], outfile: 'dist/worker.web.js' },
-  { ...forNode, entryPoints: ['src/cli/main.ts'], outfile: 'dist/cli.js', banner: { js: '#!/usr/bin/env node' } },
+  { ...forNode, entryPoints: ['src/cli/main.ts'], outfile: 'dist/cli.js', define: { LEADING_ORDER_VERSION: JSON.stringify(require('./package.json').version) }, banner: { js: '#!/usr/bin/env node' } },
   {
     ...shared,
     platform: 'browser',

@@ -1,18 +1,17 @@
-#!/usr/bin/env node
 /** leading-order: the command line. Exit codes: 0 answered, 1 declined or a claim fails, 2 wrong use. */
 import { availableParallelism } from 'node:os';
-import { dirname } from 'node:path';
 import { text as readAll } from 'node:stream/consumers';
-import { fileURLToPath } from 'node:url';
 import type { Answer, Request } from '../protocol.ts';
 import { HELP, readArguments, requestOf } from './arguments.ts';
 import { batch } from './batch.ts';
+import { checkFiles } from './check.ts';
 import { startEngine } from './engineProcess.ts';
 import { humanText } from './human.ts';
 
 declare const LEADING_ORDER_VERSION: string;
 
-const FOLDER = dirname(fileURLToPath(import.meta.url));
+/** dist/, where the worker and the grammars lie beside the bundled program (a CommonJS module). */
+const FOLDER = __dirname;
 
 async function main(argv: readonly string[]): Promise<number> {
   const line = readArguments(argv);
@@ -36,7 +35,6 @@ async function main(argv: readonly string[]): Promise<number> {
     return 0;
   }
   if (command === 'check') {
-    const { checkFiles } = await import('./check.ts');
     return checkFiles(operands, values, FOLDER);
   }
   const [operand] = operands;

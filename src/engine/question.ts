@@ -2,8 +2,9 @@
 import { dependsOn, type Assumption, type Expression, freeSymbols, walk } from '../expression/index.ts';
 import { failure, type Outcome, success } from '../outcome.ts';
 import type { ExpandRequest, Side } from '../protocol.ts';
-import { readAssumptions, readExact } from '../read/index.ts';
+import { readExact } from '../read/index.ts';
 import { toLatex } from '../write/index.ts';
+import { readAllAssumptions } from './assumptions.ts';
 import type { SourceFormula } from './source.ts';
 
 export interface Question {
@@ -20,16 +21,6 @@ export function readPoint(text: string): Outcome<Expression | 'inf' | '-inf'> {
   if (/^\+?(inf|infinity|oo|∞|\\infty)$/.test(plain)) return success('inf');
   if (/^[-−](inf|infinity|oo|∞|\\infty)$/.test(plain)) return success('-inf');
   return readExact(text);
-}
-
-export function readAllAssumptions(texts: readonly string[] | undefined): Outcome<readonly Assumption[]> {
-  const all: Assumption[] = [];
-  for (const text of texts ?? []) {
-    const read = readAssumptions(text);
-    if (!read.ok) return failure('bad-request', `The assumption "${text}" cannot be read: ${read.error.message}`);
-    all.push(...read.value);
-  }
-  return success(all);
 }
 
 const isTruncation = (e: Expression): boolean => [...walk(e)].some((n) => n.kind === 'order' || n.kind === 'dots');

@@ -11,3 +11,5 @@ export { type Assumption, type Property, rationalOf, readAssumption, readExact, 
 export const readLatex = (text: string, options: ReadOptions = {}): Outcome<Expression> => readExpression(text, 'latex', options);
 /** One formula in plain notation: `pi/2`, `sin x`, `x^2/2 + O(x^3)`, `√x`, `x²`. */
 export const readPlain = (text: string, options: ReadOptions = {}): Outcome<Expression> => readExpression(text, 'plain', options);
+export { type CommentSyntax, isKnownLanguage, type Language, languageOf, LANGUAGES, type StringRule } from './languages.ts';
+export { type Comment, type DocumentContent, findComments, type FormulaPlace, readDocument, type Region } from './document/index.ts';

@@ -29,7 +29,7 @@ export function startsFactor(p: State): boolean {
     case 'mark':
       if (t.text === '|') return p.bars === 0 || opensHere(p);
       if (t.text === '.') return peek(p, 1).kind === 'digit' && !(p.tokens[p.at - 1]?.kind === 'digit' && p.facts.dotProducts) && !(p.tokens[p.at - 1] !== undefined && p.tokens[p.at - 1]?.kind !== 'mark' && !t.spaced);
-      return opensBracket(t) || t.text === 'l|' || t.text === 'left.' || t.text === '...';
+      return opensBracket(t) || t.text === 'l|' || t.text === 'left.' || t.text === '...' || t.text === 'begin{cases}' || t.text === 'begin{table}';
     case 'command':
       if (p.differentials.has(p.at)) return true;
       return isName(t) || DOTS.has(t.text) || ACCENTS.has(t.text) || BOLD.has(t.text) || LETTERFORMS.has(t.text) || SYMBOLS.has(t.text) || ATOM_COMMANDS.has(t.text) || (relationOf(t) === null && !NOT_FACTORS.has(t.text));
@@ -70,6 +70,8 @@ export function atom(p: State): Expression {
       }
       if (opensBracket(t)) return bracket(p);
       if (t.text === '|' || t.text === 'l|') return bars(p);
+      if (t.text === 'begin{cases}') return cases(p);
+      if (t.text === 'begin{table}') fail(p, 'Matrices and tables are not read as one quantity; select one entry.');
       if (t.text === 'left.') fail(p, 'A bar with a place of evaluation is not read yet; write the value itself.');
       break;
     case 'command':
@@ -179,8 +181,8 @@ function group(p: State): Expression {
   });
 }
 
-/** `{a \over b}` and `{n \choose k}`. */
-function infix(p: State, open: number, close: number): Expression | null {
+/** `{a \over b}` and `{n \choose k}`: what stands between token `open` and token `close`, if such a sign divides it. */
+export function infix(p: State, open: number, close: number): Expression | null {
   for (let k = open + 1; k < close; k += 1) {
     const skip = p.match[k] ?? -1;
     if (skip > k) {
@@ -193,7 +195,7 @@ function infix(p: State, open: number, close: number): Expression | null {
     if (p.at !== k) fail(p, `${named(peek(p))} is not understood here; remove it or add an operator.`);
     next(p);
     const below = p.grammar.sum(p);
-    return node(p, open, t.text === 'over' ? { kind: 'quotient', numerator: above, denominator: below } : { kind: 'call', function: 'binomial', args: [above, below], written: '\\choose' });
+    return node(p, Math.max(open, 0), t.text === 'over' ? { kind: 'quotient', numerator: above, denominator: below } : { kind: 'call', function: 'binomial', args: [above, below], written: '\\choose' });
   }
   return null;
 }
@@ -224,6 +226,43 @@ function bars(p: State): Expression {
   });
 }
 const isVector = (e: Expression): boolean => e.kind === 'vector' || (e.kind === 'sum' && e.terms.some(isVector)) || (e.kind === 'negation' && isVector(e.operand));
+
+/** `\begin{cases} a & x < 0 \\ b & \text{otherwise} \end{cases}`. */
+function cases(p: State): Expression {
+  return deeper(p, () => {
+    const from = p.at;
+    const close = p.match[from] ?? -1;
+    next(p);
+    const branches: { condition: Expression | null; value: Expression }[] = [];
+    const gap = (): void => {
+      while (peek(p).kind === 'space' || peek(p).kind === 'text' || isMark(peek(p), ',', '.', ';', ':')) next(p);
+    };
+    while (p.at < close) {
+      gap();
+      if (isMark(peek(p), '\\\\')) {
+        next(p);
+        continue;
+      }
+      if (p.at >= close) break;
+      const value = p.grammar.sum(p);
+      gap();
+      let condition: Expression | null = null;
+      if (isMark(peek(p), '&')) {
+        next(p);
+        gap();
+        if (p.at < close && !isMark(peek(p), '\\\\')) condition = p.grammar.relation(p);
+      }
+      gap();
+      branches.push({ condition, value });
+      if (p.at < close && !isMark(peek(p), '\\\\')) fail(p, `${named(peek(p)).replace(/^./, (c) => c.toUpperCase())} is not understood in this case; write value & condition.`);
+    }
+    p.at = close;
+    next(p);
+    if (branches.length === 0) fail(p, 'This list of cases is empty; write value & condition.', p.tokens[from]);
+    if (isMark(peek(p), 'right.')) next(p);
+    return node(p, from, { kind: 'piecewise', branches });
+  });
+}
 
 /** Between two delimiter commands: \lvert..\rvert, \lfloor..\rfloor. */
 function fenced(p: State, closer: string, wrap: (value: Expression) => Expression): Expression {

@@ -69,10 +69,10 @@ export function gatherFacts(tokens: readonly Token[], match: Int32Array): NameFa
     let subscripted = false;
     let full = name;
     for (;;) {
-      if (is(k, "'")) {
+      if (is(k, "'") && k < i + 40) {
         primes = true;
         k += 1;
-      } else if (is(k, '_')) {
+      } else if (is(k, '_') && !subscripted) {
         subscripted = true;
         const open = k + 1;
         const end = token(open)?.kind === 'open' && (match[open] ?? -1) > 0 ? (match[open] as number) : open;

@@ -9,6 +9,11 @@ import { FRACTIONS, SUBSCRIPTS, SUPERSCRIPTS, UNICODE_COMMANDS } from './unicode
 export interface LexOptions {
   readonly notation: 'latex' | 'plain';
   readonly macros: MacroTable;
+  /** The stretch of the text to read; all of it where absent. */
+  readonly from?: number;
+  readonly to?: number;
+  /** Row ends (`\\\\`) outside `cases` are read past: continued rows of one formula. */
+  readonly joinRows?: boolean;
 }
 
 /** A stretch of text to be read: the original (fixed null), a macro body, or an argument. */
@@ -33,14 +38,19 @@ const SPACES = new Set([',', ';', ':', '>', ' ', 'quad', 'qquad', 'enspace', 'en
 const TEXTS = new Set('text textrm textnormal textit textbf textsf texttt mbox hbox intertext shortintertext emph textup'.split(' '));
 const NAMES = new Set('operatorname mathrm mathsf mathtt operatornamewithlimits mathup symup upright'.split(' '));
 const BEFORE_DELIMITER = new Set('left right middle big Big bigg Bigg bigl Bigl biggl Biggl bigr Bigr biggr Biggr bigm Bigm biggm Biggm'.split(' '));
+const LAYOUT = new Set('split aligned alignedat gathered equation align alignat gather multline eqnarray flalign displaymath math IEEEeqnarray subequations dmath xalignat xxalignat empheq multlined'.split(' '));
 const MARKS = ['...', '~=', '=~', '!=', '<=', '>=', ':=', '<<', '>>', '->', '=>', '==', '**', '\\\\'];
 const LETTER = /\p{L}/u;
 
 export function lex(text: string, options: LexOptions): Token[] {
   const out: Token[] = [];
-  const doubled = hasDoubledBackslashes(text);
-  lexSource({ text, from: 0, to: text.length, fixed: null, args: [], depth: 0 });
-  out.push({ kind: 'end', text: '', start: text.length, end: text.length, spaced: false });
+  const from = options.from ?? 0;
+  const to = options.to ?? text.length;
+  const doubled = hasDoubledBackslashes(from === 0 && to === text.length ? text : text.slice(from, to));
+  /** Nesting of environments whose rows and cells mean something. */
+  let tables = 0;
+  lexSource({ text, from, to, fixed: null, args: [], depth: 0 });
+  out.push({ kind: 'end', text: '', start: to, end: to, spaced: false });
   return out;
 
   function lexSource(source: Source): void {
@@ -119,6 +129,7 @@ export function lex(text: string, options: LexOptions): Token[] {
         push('digit', c, i, i + 1);
         i += 1;
       } else if (c === '$' || c === '&') {
+        if (c === '&' && tables > 0) push('mark', '&', i, i + 1);
         i += 1;
       } else if (c === '~' && body.charAt(i + 1) !== '=' && options.notation === 'latex') {
         spaced = true;
@@ -199,9 +210,12 @@ export function lex(text: string, options: LexOptions): Token[] {
         if (body.charAt(end) === ']' || (body.charAt(end) === '[' && body.indexOf('\\\\]', end) > 0)) return end + 1;
         const size = optional(end);
         if (size && /^\s*-?[\d.]+\s*(?:em|ex|pt|mm|cm|in|\\\w+)\s*$/.test(size.content)) end = size.end;
-        push('mark', '\\\\', at, end);
+        if (body.charAt(end) === '*') end += 1;
+        if (!(options.joinRows && tables === 0)) push('mark', '\\\\', at, end);
+        spaced = true;
         return end;
       }
+      if (name === 'begin' || name === 'end') return environment(name, at, end);
       if (name === '(' || name === ')' || name === '[' || name === ']') return end;
       if (SPACES.has(name) || name === '\n' || name === '\t') {
         push('space', name, at, end);
@@ -246,6 +260,30 @@ export function lex(text: string, options: LexOptions): Token[] {
       }
       if (TRANSPARENT.has(name)) return end;
       push('command', name, at, end);
+      return end;
+    }
+
+    /** `\begin{split}` and its like only lay out; `cases` and matrices stay as brackets of their own. */
+    function environment(name: string, at: number, from: number): number {
+      const given = argument(from);
+      if (!given) throw new Unreadable(`\\${name} has no environment name yet; add it in braces.`, place(at, from));
+      let end = after(given, from);
+      const title = given.text.slice(given.from, given.to).trim().replace(/\*$/, '');
+      if (LAYOUT.has(title)) {
+        if (name === 'begin' && /at$/.test(title)) {
+          const columns = argument(end);
+          if (columns) end = after(columns, end);
+        }
+        if (name === 'begin') end = optional(end)?.end ?? end;
+        spaced = true;
+        return end;
+      }
+      if (name === 'begin' && title === 'array') {
+        const columns = argument(optional(end)?.end ?? end);
+        if (columns) end = after(columns, optional(end)?.end ?? end);
+      }
+      tables += name === 'begin' ? 1 : -1;
+      push('mark', `${name}{${/cases$/.test(title) ? 'cases' : 'table'}}`, at, end);
       return end;
     }
 

@@ -1,7 +1,7 @@
 /** The door of the formula reader: text in, one formula with its trailing conditions out. */
 import type { Expression } from '../../expression/index.ts';
 import { failure, type Outcome, success } from '../../outcome.ts';
-import { atom, startsFactor, texArgument } from './atoms.ts';
+import { atom, infix, startsFactor, texArgument } from './atoms.ts';
 import { gatherFacts } from './facts.ts';
 import { factor, factorRun, relation, sum, term } from './grammar.ts';
 import { lex } from './lexer.ts';
@@ -17,6 +17,11 @@ export interface ReadOptions {
   readonly functions?: readonly string[];
   /** An exact value: e is Euler's number, `I` the imaginary unit. */
   readonly exact?: boolean;
+  /** The stretch of the text to read, in UTF-16 offsets; spans stay offsets of the whole text. */
+  readonly start?: number;
+  readonly end?: number;
+  /** Row ends (`\\\\`) are read past: the rows are one formula. */
+  readonly joinRows?: boolean;
 }
 
 /** What one stretch of mathematics says. */
@@ -31,7 +36,7 @@ export interface Formula {
 }
 
 const grammar: Grammar = { relation, sum, term, factorRun, factor, atom, texArgument, startsFactor };
-const CLOSER: Readonly<Record<string, string>> = { '(': ')', '[': ']', '{': '}', '\\{': '\\}', 'l|': 'r|', 'left.': 'right.' };
+const CLOSER: Readonly<Record<string, string>> = { 'begin{cases}': 'end{cases}', 'begin{table}': 'end{table}', '(': ')', '[': ']', '{': '}', '\\{': '\\}', 'l|': 'r|', 'left.': 'right.' };
 const MAX_LENGTH = 200_000;
 
 /** Partner of each bracket; -1 where it has none. Brackets may be mixed as in half-open intervals. Fails where nesting is too deep. */
@@ -43,7 +48,7 @@ function pair(tokens: readonly Token[]): Int32Array {
     if (t.kind === 'open' || (t.kind === 'mark' && CLOSER[t.text] !== undefined)) {
       open.push(i);
       if (open.length > MAX_DEPTH) throw new Unreadable(TOO_DEEP, t);
-    } else if (t.kind === 'close' || (t.kind === 'mark' && (t.text === ')' || t.text === ']' || t.text === '\\}' || t.text === 'r|' || t.text === 'right.'))) {
+    } else if (t.kind === 'close' || (t.kind === 'mark' && (t.text === ')' || t.text === ']' || t.text === '\\}' || t.text === 'r|' || t.text === 'right.' || t.text === 'end{cases}' || t.text === 'end{table}'))) {
       const start = open.pop();
       if (start === undefined) throw new Unreadable(`${t.kind === 'close' ? 'A closing brace' : 'A closing bracket'} stands here without an opening one; remove it or add the opening one.`, t);
       const begin = tokens[start] as Token;
@@ -62,8 +67,10 @@ function pair(tokens: readonly Token[]): Int32Array {
 }
 
 function stateOf(text: string, notation: 'latex' | 'plain', options: ReadOptions): State {
-  if (text.length > MAX_LENGTH) throw new Unreadable('This text is too long to be one formula; select a smaller piece.', { start: 0, end: text.length });
-  const tokens = lex(text, { notation, macros: options.macros ?? NO_MACROS });
+  const from = options.start ?? 0;
+  const to = options.end ?? text.length;
+  if (to - from > MAX_LENGTH) throw new Unreadable('This text is too long to be one formula; select a smaller piece.', { start: from, end: to });
+  const tokens = lex(text, { notation, macros: options.macros ?? NO_MACROS, from, to, joinRows: options.joinRows ?? false });
   const match = pair(tokens);
   const symbols = new Set(options.symbols ?? []);
   return {
@@ -121,7 +128,7 @@ export function readFormula(text: string, notation: 'latex' | 'plain', options: 
         p.at = end;
       }
     }
-    if (!main) return failure('unreadable', 'Nothing to read here yet; select or write a formula.', { start: 0, end: text.length });
+    if (!main) return failure('unreadable', 'Nothing to read here yet; select or write a formula.', { start: options.start ?? 0, end: options.end ?? text.length });
     return success({ expression: main, conditions, remarks, ...(unknown === undefined ? {} : { unknown }) });
   } catch (error) {
     if (error instanceof Unreadable) return { ok: false, error: error.failure };
@@ -132,7 +139,7 @@ export function readFormula(text: string, notation: 'latex' | 'plain', options: 
 /** One formula up to a separator. */
 function piece(p: State): Expression {
   const start = p.at;
-  const value = relation(p);
+  const value = infix(p, start - 1, p.end) ?? relation(p);
   if (p.at === start) fail(p, `${named(peek(p))} is not understood here.`);
   const t = peek(p);
   if (t.kind !== 'end' && !isSeparator(t) && !isMark(t, '(', '[')) {

@@ -3,7 +3,7 @@ import { askCheck } from './engine/check.ts';
 import { askExpand } from './engine/expand.ts';
 import { askFit } from './engine/fit.ts';
 import { askGuard } from './engine/guard.ts';
-import type { EngineResources } from './engine/resources.ts';
+import { type EngineResources, engineTools, type EngineTools } from './engine/resources.ts';
 import { validateRequest } from './engine/validate.ts';
 import { budget, Declined, failure, type Outcome } from './outcome.ts';
 import type { Answer, Request } from './protocol.ts';
@@ -18,13 +18,14 @@ export interface Engine {
 const DEFAULT_BUDGET_MS = 5000;
 
 export function createEngine(resources: EngineResources): Engine {
+  const tools = engineTools(resources);
   return {
     async ask(request) {
       const id = identifierOf(request);
       const tagged = (answer: Answer): Answer => (id === undefined ? answer : { id, ...answer });
       const valid = validateRequest(request);
       if (!valid.ok) return tagged(valid);
-      const outcome = await guarded(() => dispatch(valid.value, resources));
+      const outcome = await guarded(() => dispatch(valid.value, tools));
       return tagged(outcome.ok ? outcome.value : outcome);
     },
   };
@@ -35,17 +36,17 @@ function identifierOf(request: unknown): string | number | undefined {
   return typeof request.id === 'string' || typeof request.id === 'number' ? request.id : undefined;
 }
 
-function dispatch(request: Request, resources: EngineResources): Promise<Outcome<Answer>> {
+function dispatch(request: Request, tools: EngineTools): Promise<Outcome<Answer>> {
   const time = budget(request.budget_ms ?? DEFAULT_BUDGET_MS);
   switch (request.ask) {
     case 'expand':
-      return askExpand(request, resources, time);
+      return askExpand(request, tools, time);
     case 'fit':
-      return askFit(request, resources, time);
+      return askFit(request, tools, time);
     case 'guard':
-      return askGuard(request, resources, time);
+      return askGuard(request, tools, time);
     case 'check':
-      return askCheck(request, resources, time);
+      return askCheck(request, tools, time);
   }
 }
 

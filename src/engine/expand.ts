@@ -9,7 +9,7 @@ import { withBounds } from './bounds.ts';
 import { expansionAnswer } from './expansionAnswer.ts';
 import { equationOf, functionOf, questionOf, readPoint, variableOf } from './question.ts';
 import { readingAnswer } from './reading.ts';
-import type { EngineResources } from './resources.ts';
+import type { EngineTools } from './resources.ts';
 import { type SourceFormula, sourceFormula } from './source.ts';
 
 const DEFAULT_TERMS = 4;
@@ -42,8 +42,8 @@ function expanderOf(request: ExpandRequest, source: SourceFormula, time: Budget)
   return run((n) => expand({ ...question.value, ...n } satisfies ExpansionProblem, time));
 }
 
-export async function askExpand(request: ExpandRequest, resources: EngineResources, time: Budget): Promise<Outcome<ExpandAnswer>> {
-  const source = await sourceFormula(request, resources);
+export async function askExpand(request: ExpandRequest, tools: EngineTools, time: Budget): Promise<Outcome<ExpandAnswer>> {
+  const source = await sourceFormula(request, tools);
   if (!source.ok) return source;
   const expander = expanderOf(request, source.value, time);
   if (!expander.ok) return expander;

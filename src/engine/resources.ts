@@ -1,5 +1,22 @@
-/** What the engine needs from its host: the bytes of bundled files (grammars) by name. It has no file system of its own. */
+/** What the engine needs from its host, and what it keeps between requests. It has no file system of its own. */
+import { CodeReader } from '../read/code/index.ts';
+
 export interface EngineResources {
-  /** Rejects where there is no such file. */
+  /** Bytes of a bundled file (a grammar, the parser runtime) by name. Rejects where there is no such file. */
   readonly loadFile: (name: string) => Promise<Uint8Array>;
+}
+
+/** State that lives as long as one engine: loaded grammars. */
+export interface EngineTools {
+  readonly code: CodeReader;
+}
+
+const PARSER_RUNTIME = 'web-tree-sitter.wasm';
+
+export function engineTools(resources: EngineResources): EngineTools {
+  const code = new CodeReader({
+    loadGrammar: (name) => resources.loadFile(`${name}.wasm`),
+    wasmBinary: () => resources.loadFile(PARSER_RUNTIME),
+  });
+  return { code };
 }

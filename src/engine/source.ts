@@ -2,8 +2,9 @@
 import type { Expression } from '../expression/index.ts';
 import { failure, type Outcome, success } from '../outcome.ts';
 import type { ExpandRequest } from '../protocol.ts';
+import { type CodeReading, codeLanguage } from '../read/code/index.ts';
 import { readFormula, readVariable } from '../read/index.ts';
-import type { EngineResources } from './resources.ts';
+import type { EngineTools } from './resources.ts';
 
 export interface SourceFormula {
   readonly expression: Expression;
@@ -14,22 +15,45 @@ export interface SourceFormula {
   readonly likely: readonly Expression[];
   /** Reads a symbol or compound quantity written as in the text. */
   readonly readSymbol: (text: string) => Outcome<Expression>;
+  /** Where the formula stands in the request's text, in UTF-16 code units. */
   readonly start: number;
   readonly end: number;
+  /** What code around it says: format, scope, constants. */
+  readonly code?: CodeReading;
 }
 
-export async function sourceFormula(request: ExpandRequest, _resources: EngineResources): Promise<Outcome<SourceFormula>> {
+export async function sourceFormula(request: Pick<ExpandRequest, 'text' | 'language' | 'selection' | 'variable' | 'unknown'>, tools: EngineTools): Promise<Outcome<SourceFormula>> {
   const { text, language } = request;
   if (text.trim() === '') return failure('unreadable', 'There is nothing to read; select an expression.', { start: 0, end: text.length });
+  return codeLanguage(language) ? codeFormula(request, tools) : proseFormula(request);
+}
+
+async function codeFormula({ text, language, selection }: Pick<ExpandRequest, 'text' | 'language' | 'selection'>, { code }: EngineTools): Promise<Outcome<SourceFormula>> {
+  try {
+    await code.prepare(language);
+  } catch {
+    // Without its grammar a language is still read by operator precedence.
+  }
+  const read = selection ? code.readCodeAt(text, language, selection) : code.readCode(text, language);
+  if (!read.ok) return read;
+  const { expression, span } = read.value;
+  const readSymbol = (name: string): Outcome<Expression> => {
+    const symbol = code.readCode(name, language);
+    return symbol.ok ? success(symbol.value.expression) : symbol;
+  };
+  return success({ expression, conditions: [], likely: [], readSymbol, start: span.start, end: span.end, code: read.value });
+}
+
+function proseFormula({ text, language, variable, unknown }: Pick<ExpandRequest, 'text' | 'language' | 'variable' | 'unknown'>): Outcome<SourceFormula> {
   const notation = language === 'plain' ? 'plain' : 'latex';
-  const symbols = [request.variable, request.unknown].filter((s): s is string => s !== undefined && /^\\?[A-Za-z]+\w*$/.test(s));
+  const symbols = [variable, unknown].filter((s): s is string => s !== undefined && /^\\?[A-Za-z]+\w*$/.test(s));
   const formula = readFormula(text, notation, { symbols });
   if (!formula.ok) return formula;
-  const { expression, conditions, unknown } = formula.value;
+  const { expression, conditions, unknown: marked } = formula.value;
   return success({
     expression,
     conditions,
-    ...(unknown === undefined ? {} : { unknown }),
+    ...(marked === undefined ? {} : { unknown: marked }),
     likely: [],
     readSymbol: (name) => readVariable(name),
     start: 0,

@@ -60,7 +60,7 @@ if (!flags.has('--once')) {
       folder: DEMO,
       port: PORT,
       editors: [
-        { file: 'sag-note.tex', column: 1, selection: { startLineNumber: 16, startColumn: 12, endLineNumber: 16, endColumn: 33 } },
+        { file: 'sag-note.tex', column: 1, selection: { startLineNumber: 16, startColumn: 11, endLineNumber: 16, endColumn: 32 } },
         { file: 'START.md', column: 2 },
       ],
     });

@@ -87,19 +87,6 @@ export async function serveWorkbench({ folder, port, settings = {}, editors = []
   });
   const extra = {
     configurationDefaults: { ...DEFAULTS, ...settings },
-    ...(editors.length > 0
-      ? {
-          defaultLayout: {
-            force: true,
-            editors: editors.map(({ file, column, selection }) => ({
-              uri: { $mid: 1, scheme: 'vscode-test-web', authority: 'mount', path: `/${file}` },
-              viewColumn: column,
-              openOnlyIfExists: true,
-              ...(selection ? { selection, options: { selection, pinned: true } } : { options: { pinned: true } }),
-            })),
-          },
-        }
-      : {}),
     ...(locale ? { locale } : {}),
   };
   const front = http.createServer((request, response) => {
@@ -115,7 +102,7 @@ export async function serveWorkbench({ folder, port, settings = {}, editors = []
       const chunks = [];
       answer.on('data', (chunk) => chunks.push(chunk));
       answer.on('end', () => {
-        const body = withConfiguration(Buffer.concat(chunks).toString('utf8'), extra);
+        const body = withEditors(withConfiguration(Buffer.concat(chunks).toString('utf8'), extra), editors);
         const { 'content-length': _length, ...rest } = answer.headers;
         response.writeHead(answer.statusCode ?? 502, { ...rest, 'content-length': Buffer.byteLength(body) });
         response.end(body);
@@ -151,4 +138,24 @@ function withConfiguration(page, extra) {
     const configuration = JSON.parse(json.replaceAll('&quot;', '"').replaceAll('&amp;', '&'));
     return `${before}${JSON.stringify({ ...configuration, ...extra }).replaceAll('&', '&amp;').replaceAll('"', '&quot;')}"`;
   });
+}
+
+/**
+ * Opens files once the folder is there. The workbench's own default layout comes too early for a folder that an extension provides,
+ * so the page does it through the workbench's command interface when the explorer shows the files.
+ */
+function withEditors(page, editors) {
+  if (editors.length === 0) return page;
+  const opened = editors.map(({ file, column, selection }) => [{ $mid: 1, scheme: 'vscode-test-web', authority: 'mount', path: `/${file}` }, column - 1, { pinned: true, ...(selection ? { selection } : {}) }]);
+  const script = `
+require(['vs/workbench/workbench.web.main'], function (workbench) {
+  var seen = setInterval(function () {
+    if (!document.querySelector('.explorer-folders-view .monaco-list-row')) return;
+    clearInterval(seen);
+    ${JSON.stringify(opened)}.reduce(function (before, file) {
+      return before.then(function () { return workbench.commands.executeCommand('_workbench.open', workbench.URI.revive(file[0]), [file[1], file[2]]); });
+    }, Promise.resolve()).then(function () { return workbench.commands.executeCommand('workbench.action.focusFirstEditorGroup'); });
+  }, 100);
+});`;
+  return page.replace(/<\/html>\s*$/, () => `<script>${script.replaceAll('</', '<\\/')}</script></html>`);
 }

@@ -3,7 +3,7 @@ import { build, PLAIN_STYLE, Q, type DocumentStyle, type Expression } from '../e
 import type { Expansion } from '../expand/expansion.ts';
 import type { NumericAnswer } from '../protocol.ts';
 import { envelope } from './envelope.ts';
-import { expansionTree, remainderArgument, termsTree } from './expansionTree.ts';
+import { expansionTree, prefactorTree, remainderArgument, termsTree } from './expansionTree.ts';
 import { toLatex } from './latex.ts';
 import { NumericSymbols, toMpmath } from './mpmath.ts';
 import { toUnicode } from './unicode.ts';
@@ -43,7 +43,8 @@ export function remainderText(expansion: Expansion): string {
 export function expansionNumeric(expansion: Expansion): NumericAnswer {
   const symbols = new NumericSymbols();
   const terms = termsTree(expansion);
-  const sum = expansion.prefactor ? (build.isOneNumber(terms) ? expansion.prefactor : build.product(expansion.prefactor, terms)) : terms;
+  const prefactor = prefactorTree(expansion);
+  const sum = prefactor ? (build.isOneNumber(terms) ? prefactor : build.product(prefactor, terms)) : terms;
   const sumText = toMpmath(sum, symbols);
   const scaleText = toMpmath(scaleTree(expansion), symbols);
   return { syntax: 'mpmath', sum: sumText, scale: scaleText, symbols: symbols.table() };
@@ -58,7 +59,8 @@ function scaleTree(expansion: Expansion): Expression {
   if (power && !(power.kind === 'number' && Q.isZero(power.value))) factors.push(distancePower(expansion.local, power));
   if (remainder.log !== 0) factors.push(raise(build.call('abs', expansion.logarithm), build.number(remainder.log)));
   if (remainder.scale) factors.push(envelope(remainder.scale));
-  if (expansion.prefactor) factors.push(envelope(expansion.prefactor));
+  const prefactor = prefactorTree(expansion);
+  if (prefactor) factors.push(envelope(prefactor));
   return build.product(...factors.filter((f) => !build.isOneNumber(f)));
 }
 

@@ -1,5 +1,5 @@
 /** An expansion as trees that are ready to be written: its sum, term by term, and its O-term. */
-import { build, Q, type Expression } from '../expression/index.ts';
+import { build, mapChildren, Q, sameExpression, walk, type Expression } from '../expression/index.ts';
 import type { Expansion, ExpansionRemainder, ExpansionTerm } from '../expand/expansion.ts';
 import { arrange, factorsOf, type Factors, multiplyFactors, NO_FACTORS, powerFactors, splitSign } from './layout.ts';
 
@@ -7,7 +7,7 @@ type Placement = 'inside' | 'outside';
 
 /** t^power * L^log * scale in the variable, as factors: t = 1/x gives x^(-power), t = x - a stays one base. */
 function monomialFactors(expansion: Expansion, power: Expression, log: number, scale: Expression | null): Factors {
-  let factors = powerOf(expansion.local, power);
+  let factors = powerOf(expansion.local, power, expansion.point !== '-inf');
   if (log !== 0) {
     const logarithm = log === 1 || log === -1 ? expansion.logarithm : build.power(expansion.logarithm, Math.abs(log));
     factors = multiplyFactors(factors, log > 0 ? { ...NO_FACTORS, numerator: [logarithm] } : { ...NO_FACTORS, denominator: [logarithm] });
@@ -16,12 +16,13 @@ function monomialFactors(expansion: Expansion, power: Expression, log: number, s
   return factors;
 }
 
-/** base^exponent for the local variable. 1/x with a rational exponent is turned into a power of x (same principal value for x > 0, and for every x where the exponent is an integer). */
-function powerOf(base: Expression, exponent: Expression): Factors {
+/** base^exponent for the local variable. 1/x is turned into a power of x where that has the same principal value: for x > 0, and for every x where the exponent is an integer. */
+function powerOf(base: Expression, exponent: Expression, positive: boolean): Factors {
   if (exponent.kind === 'number' && Q.isZero(exponent.value)) return NO_FACTORS;
   if (exponent.kind === 'number' && Q.isOne(exponent.value)) return base.kind === 'sum' ? { ...NO_FACTORS, numerator: [base] } : factorsOf(base);
   const reciprocal = base.kind === 'quotient' && build.isOneNumber(base.numerator) ? base.denominator : null;
-  if (reciprocal) return powerOf(reciprocal, negated(exponent));
+  const integer = exponent.kind === 'number' && Q.isInteger(exponent.value);
+  if (reciprocal && (positive || integer)) return powerOf(reciprocal, negated(exponent), positive);
   return powerFactors(base, exponent) ?? { ...NO_FACTORS, numerator: [build.power(base, exponent)] };
 }
 
@@ -35,53 +36,96 @@ function negated(e: Expression): Expression {
 function coefficientFactors(coefficient: Expression): Factors {
   if (coefficient.kind === 'sum') {
     const signs = coefficient.terms.map(splitSign);
-    if (signs.every((s) => s.negative)) return { ...NO_FACTORS, negative: true, numerator: [build.sum(...signs.map((s) => s.magnitude))] };
+    if (signs.every((s) => s.negative)) return { ...NO_FACTORS, negative: true, numerator: [joinLogarithms(build.sum(...signs.map((s) => s.magnitude)))] };
   }
-  return factorsOf(coefficient);
+  const factors = factorsOf(coefficient);
+  return { ...factors, numerator: factors.numerator.map(orderedSum) };
+}
+
+/** A sum starts with a positive member where it has one. */
+function orderedSum(e: Expression): Expression {
+  if (e.kind !== 'sum') return e;
+  const sum = joinLogarithms(e);
+  if (sum.kind !== 'sum') return sum;
+  const first = sum.terms.findIndex((t) => !splitSign(t).negative);
+  const front = sum.terms[first];
+  return first <= 0 || !front ? sum : build.sum(front, ...sum.terms.filter((_, i) => i !== first));
+}
+
+/** log 2 + log pi is written log(2 pi), as in Stirling's formula. */
+function joinLogarithms(e: Expression): Expression {
+  if (e.kind !== 'sum') return e;
+  const argument = (t: Expression): Expression | null => (t.kind === 'call' && t.function === 'log' ? (t.args[0] ?? null) : null);
+  const isPi = (t: Expression): boolean => {
+    const a = argument(t);
+    return a?.kind === 'constant' && a.name === 'pi';
+  };
+  const isPositiveNumber = (t: Expression): boolean => {
+    const a = argument(t);
+    return a?.kind === 'number' && a.value.num > 0n;
+  };
+  const pi = e.terms.find(isPi);
+  const number = e.terms.find(isPositiveNumber);
+  const inside = number ? argument(number) : null;
+  if (!pi || !inside) return e;
+  const joined = build.call('log', build.product(inside, build.constant('pi')));
+  return build.sum(...e.terms.filter((t) => t !== pi && t !== number), joined);
 }
 
 export function termTree(expansion: Expansion, term: ExpansionTerm, placement: Placement = 'inside'): Expression {
   const monomial = monomialFactors(expansion, term.power, term.log, term.scale);
   const coefficient = coefficientFactors(term.coefficient);
   const onlyCoefficient = monomial.numerator.length + monomial.denominator.length === 0;
-  if (onlyCoefficient && term.coefficient.kind === 'sum') return coefficient.negative ? build.negation(build.sum(...(coefficient.numerator[0]?.kind === 'sum' ? coefficient.numerator[0].terms : coefficient.numerator))) : term.coefficient;
-  return arrange(coefficient, monomial, placement);
+  if (onlyCoefficient && term.coefficient.kind === 'sum') return orderedSum(term.coefficient);
+  return arrange(coefficient, monomial, isTall(expansion.local) ? 'outside' : placement);
 }
+
+/** A local variable that holds a fraction (x - pi/4) is not set into another one. */
+const isTall = (local: Expression): boolean => local.kind === 'sum' && [...walk(local)].some((e) => e.kind === 'quotient' || (e.kind === 'number' && !Q.isInteger(e.value)));
 
 /** The partial sum without the prefactor; 0 where there is no term. */
 export function termsTree(expansion: Expansion, placement: Placement = 'inside'): Expression {
-  const terms = expansion.terms.map((t) => termTree(expansion, t, placement));
-  return build.sum(...terms.flatMap((t) => (t.kind === 'sum' ? t.terms : [t])));
+  return build.sum(...termMembers(expansion, placement));
+}
+
+/** The members of the printed sum: a constant term that is a sum joins it, a local variable that is a sum (x - 1) stays together. */
+function termMembers(expansion: Expansion, placement: Placement): readonly Expression[] {
+  return expansion.terms.flatMap((term) => {
+    const tree = termTree(expansion, term, placement);
+    const isConstant = term.coefficient.kind === 'sum' && term.log === 0 && !term.scale && term.power.kind === 'number' && Q.isZero(term.power.value);
+    return isConstant && tree.kind === 'sum' ? tree.terms : [tree];
+  });
 }
 
 /** What the remainder is O of, inside the prefactor. */
 export function remainderArgument(expansion: Expansion, remainder: ExpansionRemainder): Expression {
   const power = remainder.power ?? build.number(0);
   const factors = monomialFactors(expansion, power, remainder.log, remainder.scale);
-  if (factors.denominator.length === 0) return arrange({ ...factors, negative: false, coefficient: Q.ONE });
-  return reciprocalPowers({ ...factors, negative: false, coefficient: Q.ONE });
+  const bare = { ...factors, negative: false, coefficient: Q.ONE };
+  const [only] = bare.denominator;
+  if (bare.denominator.length !== 1 || bare.numerator.length > 0 || !only) return arrange(bare);
+  return only.kind === 'power' ? build.power(only.base, negated(only.exponent)) : build.power(only, -1);
 }
 
-/** In an O-term a lone reciprocal is written x^{-4}, not as a fraction. */
-function reciprocalPowers(factors: Factors): Expression {
-  const raised = factors.denominator.map((f) =>
-    f.kind === 'power' ? build.power(f.base, negated(f.exponent)) : build.power(f, build.number(-1)),
-  );
-  return build.product(...raised, ...factors.numerator);
+/** The prefactor as it is written: one fraction, powers of 1/x turned into powers of x where the point is at +infinity. */
+export function prefactorTree(expansion: Expansion, placement: Placement = 'inside'): Expression | null {
+  const { prefactor, local, point } = expansion;
+  if (!prefactor) return null;
+  const reciprocal = point === 'inf' && local.kind === 'quotient' && build.isOneNumber(local.numerator) ? local : null;
+  const turn = (e: Expression): Expression => (reciprocal && e.kind === 'power' && sameExpression(e.base, reciprocal) ? build.power(reciprocal.denominator, negated(e.exponent)) : mapChildren(e, turn));
+  return arrange(factorsOf(turn(prefactor)), NO_FACTORS, placement);
 }
 
 /** prefactor * (terms + O(...)), or terms + O(...). With `ending` 'none' the O-term is left out, with 'dots' dots stand in its place. */
 export function expansionTree(expansion: Expansion, ending: 'order' | 'dots' | 'none' = 'order', placement: Placement = 'inside'): Expression {
-  const terms = expansion.terms.map((t) => termTree(expansion, t, placement)).flatMap((t) => (t.kind === 'sum' ? t.terms : [t]));
-  const members = [...terms];
+  const members = [...termMembers(expansion, placement)];
   if (expansion.remainder && ending === 'order') members.push({ kind: 'order', little: false, argument: remainderArgument(expansion, expansion.remainder) });
   if (expansion.remainder && ending === 'dots') members.push({ kind: 'dots' });
   const inside = build.sum(...members);
-  const { prefactor } = expansion;
-  if (!prefactor) return inside;
-  if (build.isOneNumber(inside)) return prefactor;
-  if (inside.kind !== 'sum') return arrange(multiplyFactors(factorsOf(prefactor), factorsOf(inside)), NO_FACTORS, placement);
-  const front = arrange(factorsOf(prefactor), NO_FACTORS, placement);
+  const front = prefactorTree(expansion, placement);
+  if (!front) return inside;
+  if (build.isOneNumber(inside)) return front;
+  if (inside.kind !== 'sum') return arrange(multiplyFactors(factorsOf(front), factorsOf(inside)), NO_FACTORS, placement);
   const { negative, magnitude } = splitSign(front);
   const factors = magnitude.kind === 'product' ? magnitude.factors : [magnitude];
   const whole = build.product(...factors, inside);

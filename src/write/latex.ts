@@ -293,7 +293,7 @@ class LatexWriter {
     const [only] = args;
     const tall = written.some((w) => w.tall);
     const text = written.map((w) => w.text).join(', ');
-    if (args.length === 1 && only && !delimited && BARE_NAMES.test(name) && standsBare(only, text)) return { text: glue(name, `${/^[A-Za-z0-9]/.test(text) ? ' ' : ''}${text}`), level: Level.Prefix, tall, open: true };
+    if (args.length === 1 && only && !delimited && BARE_NAMES.test(name) && standsBare(only, text) && !(only.kind === 'product' && /^\\l/.test(name))) return { text: glue(name, `${/^[A-Za-z0-9]/.test(text) ? ' ' : ''}${text}`), level: Level.Prefix, tall, open: true };
     const grows = tall && this.style.parentheses === 'auto';
     return { text: grows ? `${name}\\left(${text}\\right)` : `${name}(${text})`, level: name.includes('^') || args.length !== 1 || BARE_NAMES.test(name) ? Level.Power : Level.Atom, tall };
   }
@@ -366,6 +366,8 @@ function standsBare(e: Expression, text: string): boolean {
       return !/^\\mathrm/.test(latexSymbol(e.name));
     case 'constant':
       return true;
+    case 'call':
+      return e.function === 'abs';
     case 'number':
       return e.written === undefined;
     case 'quotient':

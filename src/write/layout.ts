@@ -1,5 +1,6 @@
 /** The arrangement of one term of an expansion as a person writes it: sign in front, one fraction, numbers before constants before symbols, positive powers on their own side of the bar. */
 import { build, Q, type Expression, type Rational } from '../expression/index.ts';
+import { splitExponential } from './exponential.ts';
 
 /** e = sign * coefficient * product of numerator / product of denominator, without changing any value. */
 export interface Factors {
@@ -41,11 +42,20 @@ export function factorsOf(e: Expression): Factors {
       const below = invertFactors(factorsOf(e.denominator));
       return below ? multiplyFactors(factorsOf(e.numerator), below) : { ...NO_FACTORS, numerator: [e] };
     }
+    case 'call':
+      return (e.function === 'exp' && e.args[0] ? exponentialFactors(e.args[0]) : null) ?? { ...NO_FACTORS, numerator: [e] };
     case 'power':
-      return powerFactors(e.base, e.exponent) ?? { ...NO_FACTORS, numerator: [e] };
+      return (e.base.kind === 'constant' && e.base.name === 'e' ? exponentialFactors(e.exponent) : powerFactors(e.base, e.exponent)) ?? { ...NO_FACTORS, numerator: [e] };
     default:
       return { ...NO_FACTORS, numerator: [e] };
   }
+}
+
+function exponentialFactors(exponent: Expression): Factors | null {
+  const split = splitExponential(exponent);
+  if (!split) return null;
+  const start: Factors = split.rest ? { ...NO_FACTORS, numerator: [build.power(build.constant('e'), split.rest)] } : NO_FACTORS;
+  return split.powers.map(({ base, exponent: e }) => (build.isOneNumber(e) ? factorsOf(base) : (powerFactors(base, e) ?? { ...NO_FACTORS, numerator: [build.power(base, e)] }))).reduceRight((all, f) => multiplyFactors(f, all), start);
 }
 
 /** base^exponent taken apart where that is an identity on the whole domain: integer exponents of monomials, and the sign of any rational exponent. */
@@ -101,16 +111,71 @@ function rank(e: Expression): number {
   }
 }
 
-/** The tree of a monomial with one fraction bar. `last` are factors that stand at the end of the numerator (or of the denominator where they are inverted): the powers of the variable. */
+/**
+ * The tree of a monomial. `last` are the powers of the variable: with `inside` they join the one fraction bar (at the end of the numerator, or of the denominator where they are inverted),
+ * with `outside` they follow the coefficient's own fraction.
+ */
 export function arrange(factors: Factors, last: Factors = NO_FACTORS, placement: 'inside' | 'outside' = 'inside'): Expression {
   const negative = factors.negative !== last.negative;
-  const coefficient = Q.multiply(factors.coefficient, last.coefficient);
-  const ordered = (list: readonly Expression[]): Expression[] => [...list].sort((a, b) => rank(a) - rank(b));
-  const [leading, trailing] = [ordered(factors.numerator), [...last.numerator]];
-  const numerator = mergePowers([...leading, ...trailing]);
-  const denominator = mergePowers([...ordered(factors.denominator), ...last.denominator]);
-  const magnitude = placement === 'outside' ? outside(coefficient, numerator, denominator) : inside(coefficient, numerator, denominator);
+  const apart = placement === 'outside' && last.numerator.length > 0 && last.denominator.length === 0 && Q.isOne(last.coefficient);
+  const magnitude = apart ? beside(oneFraction(factors, NO_FACTORS), oneFraction(last, NO_FACTORS)) : oneFraction(factors, last);
   return negative ? build.negation(magnitude) : magnitude;
+}
+
+function beside(front: Expression, back: Expression): Expression {
+  if (build.isOneNumber(front)) return back;
+  return build.product(...(front.kind === 'product' ? front.factors : [front]), ...(back.kind === 'product' ? back.factors : [back]));
+}
+
+function oneFraction(factors: Factors, last: Factors): Expression {
+  const ordered = (list: readonly Expression[]): Expression[] => [...list].sort((a, b) => rank(a) - rank(b));
+  const coefficient = Q.multiply(factors.coefficient, last.coefficient);
+  const [numerator, denominator] = collectPowers([...ordered(factors.numerator), ...last.numerator], [...ordered(factors.denominator), ...last.denominator]);
+  return inside(coefficient, mergePowers(numerator), mergePowers(denominator));
+}
+
+/** x^p x^q = x^(p+q) and 1/x^q = x^(-q) for principal values: a symbol that occurs more than once gets one power, on the side of the bar where it is positive. */
+function collectPowers(numerator: readonly Expression[], denominator: readonly Expression[]): readonly [readonly Expression[], readonly Expression[]] {
+  const totals = new Map<string, { count: number; exponent: Rational; base: Expression }>();
+  const part = (f: Expression): { base: Expression; exponent: Rational } | null =>
+    f.kind === 'symbol' ? { base: f, exponent: Q.ONE } : f.kind === 'power' && f.base.kind === 'symbol' && f.exponent.kind === 'number' ? { base: f.base, exponent: f.exponent.value } : null;
+  const nameOf = (f: Expression): string | null => {
+    const base = part(f)?.base;
+    return base?.kind === 'symbol' ? base.name : null;
+  };
+  const count = (f: Expression, sign: 1 | -1): void => {
+    const p = part(f);
+    const name = nameOf(f);
+    if (!p || name === null) return;
+    const known = totals.get(name);
+    const exponent = Q.add(known?.exponent ?? Q.ZERO, sign === 1 ? p.exponent : Q.negate(p.exponent));
+    totals.set(name, { count: (known?.count ?? 0) + 1, exponent, base: p.base });
+  };
+  for (const f of numerator) count(f, 1);
+  for (const f of denominator) count(f, -1);
+  if (![...totals.values()].some((t) => t.count > 1)) return [numerator, denominator];
+  const place = (list: readonly Expression[], sign: 1 | -1): Expression[] => {
+    const placed = new Set<string>();
+    return list.flatMap((f) => {
+      const name = nameOf(f);
+      const total = name === null ? undefined : totals.get(name);
+      if (name === null || !total || total.count === 1) return [f];
+      if (placed.has(name) || Q.signOf(total.exponent) !== sign) return [];
+      placed.add(name);
+      const exponent = sign === 1 ? total.exponent : Q.negate(total.exponent);
+      return [Q.isOne(exponent) ? total.base : build.power(total.base, exponent)];
+    });
+  };
+  const [above, below] = [place(numerator, 1), place(denominator, -1)];
+  for (const [name, total] of totals) {
+    const side = Q.signOf(total.exponent);
+    if (total.count === 1 || side === 0) continue;
+    const list = side === 1 ? above : below;
+    if (list.some((f) => nameOf(f) === name)) continue;
+    const exponent = Q.absolute(total.exponent);
+    list.push(Q.isOne(exponent) ? total.base : build.power(total.base, exponent));
+  }
+  return [above, below];
 }
 
 function withNumber(value: bigint, factors: readonly Expression[]): Expression {
@@ -127,31 +192,42 @@ function inside(coefficient: Rational, numerator: readonly Expression[], denomin
   return build.quotient(above, withNumber(coefficient.den, denominator));
 }
 
-function outside(coefficient: Rational, numerator: readonly Expression[], denominator: readonly Expression[]): Expression {
-  if (coefficient.den === 1n || numerator.length === 0) return inside(coefficient, numerator, denominator);
-  const front = build.quotient(build.number(coefficient.num), withNumber(coefficient.den, denominator));
-  return build.product(front, ...numerator);
+/** Powers of e become one, roots of positive constants move under one root. */
+const mergePowers = (list: readonly Expression[]): readonly Expression[] => mergeRoots(mergeExponentials(list));
+
+function mergeExponentials(list: readonly Expression[]): readonly Expression[] {
+  const exponents = list.map((f) => exponentOf(f));
+  const found = exponents.filter((e) => e !== null);
+  if (found.length < 2) return list;
+  const whole = build.power(build.constant('e'), build.sum(...found.flatMap((e) => (e.kind === 'sum' ? e.terms : [e]))));
+  let placed = false;
+  return list.flatMap((f, i) => {
+    if (exponents[i] === null) return [f];
+    if (placed) return [];
+    placed = true;
+    return [whole];
+  });
 }
 
-/** Neighbouring powers of one base with numeric exponents become one power; a factor that cancels disappears. */
-function mergePowers(list: readonly Expression[]): Expression[] {
-  const merged: Expression[] = [];
-  for (const factor of list) {
-    const previous = merged.at(-1);
-    const joined = previous ? joinPowers(previous, factor) : null;
-    if (joined) merged[merged.length - 1] = joined;
-    else merged.push(factor);
-  }
-  return merged;
+/** The exponent of e^a that is not a plain number (sqrt(e) and e^2 stay in front). */
+function exponentOf(f: Expression): Expression | null {
+  if (f.kind === 'call' && f.function === 'exp') return f.args[0] ?? null;
+  return f.kind === 'power' && f.base.kind === 'constant' && f.base.name === 'e' && f.exponent.kind !== 'number' ? f.exponent : null;
 }
 
-function joinPowers(a: Expression, b: Expression): Expression | null {
-  const part = (e: Expression): { base: Expression; exponent: Rational } =>
-    e.kind === 'power' && e.exponent.kind === 'number' ? { base: e.base, exponent: e.exponent.value } : { base: e, exponent: Q.ONE };
-  const [x, y] = [part(a), part(b)];
-  if (x.base.kind !== 'symbol' || y.base.kind !== 'symbol' || x.base.name !== y.base.name) return null;
-  const exponent = Q.add(x.exponent, y.exponent);
-  return Q.isOne(exponent) ? x.base : build.power(x.base, exponent);
+const isSquareRoot = (f: Expression): f is Extract<Expression, { kind: 'power' }> => f.kind === 'power' && f.exponent.kind === 'number' && Q.equal(f.exponent.value, Q.HALF);
+const isPositiveConstant = (e: Expression): boolean => (e.kind === 'number' && e.value.num > 0n) || (e.kind === 'constant' && (e.name === 'pi' || e.name === 'e'));
+
+/** sqrt(p) sqrt(z) = sqrt(p z) for every z where p > 0 (principal values). */
+function mergeRoots(list: readonly Expression[]): readonly Expression[] {
+  const constants = list.filter((f) => isSquareRoot(f) && isPositiveConstant(f.base));
+  const other = list.find((f) => isSquareRoot(f) && !isPositiveConstant(f.base));
+  const together = other ? [...constants, other] : constants;
+  if (together.length < 2 || constants.length === 0) return list;
+  const inside = together.flatMap((f) => (f.kind === 'power' ? (f.base.kind === 'product' ? f.base.factors : [f.base]) : []));
+  const whole = build.squareRoot(build.product(...inside.sort((a, b) => rank(a) - rank(b))));
+  const first = list.findIndex((f) => together.includes(f));
+  return list.flatMap((f, i) => (i === first ? [whole] : together.includes(f) ? [] : [f]));
 }
 
 /** The sign that a writer puts in front, and what follows it. */

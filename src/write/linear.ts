@@ -21,6 +21,8 @@ export interface Dialect {
   readonly minus: string;
   readonly times: string;
   readonly spaceAroundSum: boolean;
+  /** Divisions come after all products (`17*x^6/45`), so that a whole number is divided; otherwise each stands where the tree has it. */
+  readonly dividesLast: boolean;
   /** A non-negative number. */
   number(value: Rational, written: string | undefined): Piece;
   constant(name: ConstantName): Piece;
@@ -87,13 +89,12 @@ export function writeLinear(expression: Expression, dialect: Dialect): Piece {
     return { text, binding: Binding.Sum };
   };
 
-  /** Division comes after every product, so that `17*x^6/45` divides an exact whole. */
   const writeProduct = (factors: readonly Expression[]): Piece => {
     const { negative, magnitude } = splitSign({ kind: 'product', factors });
     if (negative) return negated(write(magnitude));
     const above: Expression[] = [];
     const below: Expression[] = [];
-    for (const factor of factors) {
+    for (const factor of dialect.dividesLast ? factors : []) {
       if (factor.kind === 'number' && factor.value.den !== 1n && factor.value.num > 0n && factor.written === undefined) {
         if (factor.value.num !== 1n) above.push(build.number(factor.value.num));
         below.push(build.number(factor.value.den));
@@ -102,11 +103,12 @@ export function writeLinear(expression: Expression, dialect: Dialect): Piece {
         below.push(factor.denominator);
       } else above.push(factor);
     }
+    if (!dialect.dividesLast) above.push(...factors);
     if (below.length > 0) return writeQuotient(build.product(...above), build.product(...below));
     let text = '';
     let lastPiece = '';
     above.forEach((factor, i) => {
-      const piece = enclosed(write(factor), i === 0 ? Binding.Product : Binding.Power);
+      const piece = enclosed(write(factor), i === 0 && dialect.dividesLast ? Binding.Product : Binding.Power);
       const previous = above[i - 1];
       if (!previous) text = piece;
       else text += `${dialect.standsTogether?.(lastPiece, previous, piece, factor) ? '' : dialect.times}${piece}`;

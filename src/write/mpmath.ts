@@ -41,6 +41,7 @@ function dialect(symbols: NumericSymbols): Dialect {
     minus: '-',
     times: '*',
     spaceAroundSum: true,
+    dividesLast: true,
     number: (value) => (value.den === 1n ? atom(`${value.num}`) : { text: `${value.num}/${value.den}`, binding: Binding.Product }),
     constant: (name) => atom(CONSTANTS[name]),
     symbol: (name) => atom(symbols.nameOf(name)),

@@ -21,6 +21,7 @@ const UNICODE: Dialect = {
   minus: '−',
   times: '·',
   spaceAroundSum: true,
+  dividesLast: false,
   number: (value, written) => {
     const exact = written !== undefined && /^\d*\.\d+$/.test(written) ? Q.fromDecimal(written) : null;
     if (exact && Q.equal(exact, value)) return atom(written ?? '');
@@ -128,11 +129,11 @@ function standsTogether(left: string, leftFactor: Expression, right: string, rig
   const letterStarts = /^[\p{L}√]/u.test(right);
   const oneLetter = (e: Expression): boolean => {
     const base = e.kind === 'power' ? e.base : e;
-    return (base.kind === 'symbol' && /^\p{L}[₀-₉′]*$/u.test(unicodeSymbol(base.name))) || (base.kind === 'constant' && base.name !== 'infinity');
+    return (base.kind === 'symbol' && /^\p{L}[₀-₉′]*$/u.test(unicodeSymbol(base.name))) || (base.kind === 'constant' && base.name === 'pi');
   };
   const afterNumber = leftFactor.kind === 'number' && /^\d+$/.test(left);
   if (afterNumber) return letterStarts || right.startsWith('(');
-  if (!oneLetter(leftFactor) || /[)√]$/.test(left)) return false;
+  if (!oneLetter(leftFactor) || left.startsWith('√')) return false;
   if (leftFactor.kind === 'power' && /\^/.test(left)) return false;
   return oneLetter(rightFactor) && letterStarts;
 }

@@ -28,10 +28,13 @@ describe('expansions in LaTeX', () => {
     ['tan^2', tanSquared, 'x^2 + \\frac{2x^4}{3} + \\frac{17x^6}{45} + O(x^8)'],
     ['Lorentz factor', lorentz, '1 + \\frac{v^2}{2c^2} + \\frac{3v^4}{8c^4} + \\frac{5v^6}{16c^6} + O(v^8)'],
     ['cos x / x^2', expansionOf(sin, [[1, -2], [[-1, 2], 0], [[1, 24], 2]], [4]), '\\frac{1}{x^2} - \\frac{1}{2} + \\frac{x^2}{24} + O(x^4)'],
-    ['Puiseux', expansionOf(sin, [[squareRoot(n(2)), [1, 2]], [quotient(product(n(-1), squareRoot(n(2))), n(12)), [3, 2]]], [[5, 2]]), '\\sqrt{2} \\sqrt{x} - \\frac{\\sqrt{2} x^{3/2}}{12} + O(x^{5/2})'],
+    ['Puiseux', expansionOf(sin, [[squareRoot(n(2)), [1, 2]], [quotient(product(n(-1), squareRoot(n(2))), n(12)), [3, 2]]], [[5, 2]]), '\\sqrt{2x} - \\frac{\\sqrt{2} x^{3/2}}{12} + O(x^{5/2})'],
     ['log about a', logAbout, '\\ln a + \\frac{x - a}{a} - \\frac{(x - a)^2}{2a^2} + O((x - a)^3)'],
     ['Stirling', stirling, '\\sqrt{\\frac{2\\pi}{x}} \\left(\\frac{x}{e}\\right)^x \\left(1 + \\frac{1}{12x} + \\frac{1}{288x^2} - \\frac{139}{51840x^3} + O(x^{-4})\\right)'],
     ['digamma at infinity', expansionOf(sin, [[1, 0, 1], [[-1, 2], 1], [[-1, 12], 2]], [4], atInfinity()), '\\ln x - \\frac{1}{2x} - \\frac{1}{12x^2} + O(x^{-4})'],
+    ['a local variable with a fraction stays outside', expansionOf(sin, [[quotient(squareRoot(n(2)), n(2)), 0], [quotient(squareRoot(n(2)), n(2)), 1]], [2], about(quotient(constant('pi'), n(4)))), '\\frac{\\sqrt{2}}{2} + \\frac{\\sqrt{2}}{2} \\left(x - \\frac{\\pi}{4}\\right) + O\\left(\\left(x - \\frac{\\pi}{4}\\right)^2\\right)'],
+    ['a local variable that is a sum stays together', expansionOf(sin, [[1, 0], [1, 1]], [2], about(n(1))), '1 + (x - 1) + O((x - 1)^2)'],
+    ['logarithms in the remainder', expansionOf(sin, [[1, 1, 1]], [2, 2], atInfinity()), '\\frac{\\ln x}{x} + O\\left(\\frac{\\ln^2 x}{x^2}\\right)'],
     ['exact', expansionOf(quotient(n(1), x), [[1, -1]], null), '\\frac{1}{x}'],
   ])('%s', (_, expansion, latex) => {
     expect(expansionLatex(expansion)).toBe(latex);

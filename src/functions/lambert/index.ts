@@ -2,6 +2,7 @@
 import { build, type Expression } from '../../expression/index.ts';
 import type { FunctionDescription } from '../description.ts';
 import { names } from '../naming.ts';
+import { lambertLocal, lambertValue, wrightLocal, wrightValue } from './lambert.ts';
 
 const { call, number, product, quotient, sum } = build;
 const zeroBranch = {
@@ -35,8 +36,10 @@ export const lambertFunctions: readonly FunctionDescription[] = [
       const w = call('lambertW', k, x);
       return index === 1 ? quotient(number(1), product(call('exp', w), sum(number(1), w))) : null;
     },
+    local: lambertLocal,
+    value: lambertValue,
     domain: 'x >= -1/e (branch 0), -1/e <= x < 0 (branch -1)',
     source: 'DLMF 4.13.1',
   },
-  { id: 'wrightOmega', title: 'Wright omega function, y + ln y = x', arity: 1, names: names({ latex: ['\\operatorname{wrightomega}', '\\omega_W'], latexForm: ([x = '']) => `W(e^{${x}})`, mpmath: ([x = '']) => `lambertw(exp(${x}))`, code: { python: 'wrightomega', matlab: 'wrightOmega' } }), derivative: ([x = number(0)]) => quotient(call('wrightOmega', x), sum(number(1), call('wrightOmega', x))), source: 'Corless & Jeffrey, The Wright omega function (2002), from memory' },
+  { id: 'wrightOmega', title: 'Wright omega function, y + ln y = x', arity: 1, local: wrightLocal, value: wrightValue, names: names({ latex: ['\\operatorname{wrightomega}', '\\omega_W'], latexForm: ([x = '']) => `W(e^{${x}})`, mpmath: ([x = '']) => `lambertw(exp(${x}))`, code: { python: 'wrightomega', matlab: 'wrightOmega' } }), derivative: ([x = number(0)]) => quotient(call('wrightOmega', x), sum(number(1), call('wrightOmega', x))), source: 'Corless & Jeffrey, The Wright omega function (2002), from memory' },
 ];

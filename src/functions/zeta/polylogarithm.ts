@@ -44,7 +44,7 @@ function atFar(s: Expression, x: Expression, direction: 1 | -1): LocalForm | nul
   const eta = (k: number): Rational | Expression => (k === 0 ? Q.HALF : etaAtInteger(2 * k));
   if (n !== null && n >= 1) {
     const terms = Array.from({ length: Math.floor(n / 2) + 1 }, (_, k) => times(Q.rational(-2n, factorial(n - 2 * k)), eta(k), pow(w, n - 2 * k)));
-    return form(plus(...terms, times(n % 2 === 0 ? -1 : 1, F1)), [powerSum(s, over(1, x))], 'Jonquière's inversion: DLMF 25.12.7 and its general form');
+    return form(plus(...terms, times(n % 2 === 0 ? -1 : 1, F1)), [powerSum(s, over(1, x))], 'Inversion formula of Jonquière; DLMF 25.12.7 for order 2');
   }
   if (direction === 1 || n !== null) return null;
   const exact = asRational(s);

@@ -98,27 +98,37 @@ function headline(consultation: Consultation, answer: ExpandAnswer): string {
   return `**${escapeMarkdown(limit)}** ${escapeMarkdown(`(${sourcesText(sources, small ? ['small'] : ['variable', 'point'])})`)}`;
 }
 
-/** One table: the remainder, its bound and the terms needed on the interval; without an interval how far 2, 3 and 4 terms reach. */
+/** One table: with an interval the remainder's order, its bound and the terms needed; without one how far 2, 3 and 4 terms reach. */
 function figures(answer: ExpandAnswer, { asked }: Consultation): string {
-  const rows: string[][] = [];
-  const order = answer.remainder ? answer.remainder.power : null;
-  if (answer.exact) rows.push([vscode.l10n.t('remainder'), vscode.l10n.t('none: the sum is exact')]);
-  if (asked.interval) {
-    const on = vscode.l10n.t('on [{0}, {1}]', asked.interval[0], asked.interval[1]);
-    if (answer.bound) rows.push([vscode.l10n.t('proven bound {0}', on), answer.bound.value ? `${answer.bound.value}${answer.bound.factor ? ` · ${answer.bound.factor}` : ''}` : vscode.l10n.t('none: unbounded at {0}', answer.bound.place ?? '?')]);
-    if (answer.needed) rows.push([vscode.l10n.t('terms needed for {0}', asked.tolerance ?? ''), neededText(answer)]);
+  if (answer.exact) return escapeMarkdown(vscode.l10n.t('The sum is exact: nothing is left out.'));
+  const tolerance = asked.tolerance ?? '';
+  if (asked.interval && (answer.bound || answer.needed)) {
+    const [from, to] = asked.interval.map(minus);
+    const columns: (readonly [string, string])[] = [[vscode.l10n.t('terms'), String(answer.terms.length)]];
+    if (answer.bound) columns.push([vscode.l10n.t('proven bound on [{0}, {1}]', from ?? '', to ?? ''), boundText(answer)]);
+    if (answer.needed) columns.push([vscode.l10n.t('terms needed for {0}', tolerance), neededText(answer)]);
+    return table(
+      columns.map(([name]) => escapeMarkdown(name)),
+      [columns.map(([, value]) => escapeMarkdown(value))],
+    );
   }
-  const facts = rows.length > 0 ? table([vscode.l10n.t('terms'), String(answer.terms.length)], rows.map((row) => row.map(escapeMarkdown))) : '';
-  if (asked.interval || answer.exact || !answer.reach || answer.reach.length === 0) return facts;
-  const reach = table(
-    [vscode.l10n.t('terms'), ...answer.reach.map((row) => String(row.terms))],
+  const { reach } = answer;
+  if (!reach || reach.length === 0) return '';
+  return table(
+    [escapeMarkdown(vscode.l10n.t('terms')), ...reach.map((row) => String(row.terms))],
     [
-      [escapeMarkdown(vscode.l10n.t('error ≤ {0} proven up to a distance of', asked.tolerance ?? '')), ...answer.reach.map((row) => escapeMarkdown(row.distance ?? '–'))],
-      [escapeMarkdown(vscode.l10n.t('order left out')), ...answer.reach.map((row) => escapeMarkdown(row.order))],
+      [escapeMarkdown(vscode.l10n.t('error proven ≤ {0} within', tolerance)), ...reach.map((row) => escapeMarkdown(row.distance === null ? '–' : row.distance === 'inf' ? '∞' : row.distance))],
+      [escapeMarkdown(vscode.l10n.t('left out')), ...reach.map((row) => escapeMarkdown(row.order))],
     ],
   );
-  return [facts, order === null && facts === '' ? '' : '', reach].filter(Boolean).join('\n\n');
 }
+
+function boundText({ bound }: ExpandAnswer): string {
+  if (!bound) return '–';
+  if (bound.value === null) return vscode.l10n.t('none: unbounded at {0}', bound.place ?? '?');
+  return bound.factor ? `${bound.value} · ${bound.factor}` : bound.value;
+}
+const minus = (end: string): string => end.replaceAll('-', '−');
 
 function neededText(answer: ExpandAnswer): string {
   const { needed } = answer;

@@ -2,7 +2,7 @@
 import * as vscode from 'vscode';
 import type { Detail, ErrorAnswer, FitAnswer, GuardAnswer } from '../protocol.ts';
 import type { CodeControls, CopyKind, FromPage, HistoryEntry, Kept, Mode, PageState, Shown, ToPage } from '../webview/messages.ts';
-import type { Place, Proposal, Question, TextEdit } from '../worker/desk/types.ts';
+import type { Place, Proposal, ProposalKind, Question, TextEdit } from '../worker/desk/types.ts';
 import { proposalTitle } from './actions.ts';
 import { type Consultation, selectionOf } from './consultant.ts';
 import { applyChecked, groundOf, rangeOf } from './edits.ts';
@@ -306,12 +306,24 @@ export class Page implements vscode.Disposable {
       code: document ? isCode(engineLanguage(document)) : false,
       pinned: this.#pinned,
       stale: this.#stale,
-      actions: this.#proposals.map((proposal) => ({ label: proposalTitle(proposal) })),
+      actions: this.#proposals.map((proposal) => ({ label: buttonLabel(proposal), title: proposalTitle(proposal) })),
       history: this.#history.slice(1).map(({ label, detail }) => ({ label, detail })),
     };
     const message: ToPage = { kind: 'state', state, kept: this.kept };
     void this.#webview.postMessage(message);
   }
+}
+
+/** The page shows the result itself, so its buttons need only say what is done with it. */
+function buttonLabel({ kind }: Proposal): string {
+  const labels: Readonly<Record<ProposalKind, string>> = {
+    after: vscode.l10n.t('Insert after'),
+    row: vscode.l10n.t('Insert as next row'),
+    replace: vscode.l10n.t('Replace'),
+    polynomial: vscode.l10n.t('Replace by polynomial'),
+    comment: vscode.l10n.t('Insert comment above'),
+  };
+  return labels[kind];
 }
 
 const firstLine = (text: string): string => text.split('\n').find((line) => line.trim() !== '')?.trim() ?? '';

@@ -34,7 +34,6 @@ export interface ExpandValues {
   readonly point: string;
   readonly candidates: readonly string[];
   readonly termCount: number;
-  readonly code: boolean;
 }
 
 export function expandControls(values: ExpandValues, choose: (question: Question) => void): HTMLElement {

@@ -6,16 +6,17 @@ import { type Child, h } from './dom.ts';
 import { ladder } from './ladder.ts';
 import { t } from './language.ts';
 import { math } from './math.ts';
-import type { PageState, Shown } from './messages.ts';
+import type { Shown } from './messages.ts';
 import { errorPlot, functionPlot } from './plot.ts';
 
 type Expanded = Extract<Shown, { readonly kind: 'expansion' }>;
 
-export function expansionSection(shown: Expanded, state: PageState, width: number, choose: (question: Question) => void): Child[] {
+export function expansionSection(shown: Expanded, into: HTMLElement, width: number, choose: (question: Question) => void): Child[] {
   const { answer, asked, origins } = shown;
   const { reading } = answer;
   return [
     formula(answer),
+    into,
     expandControls(
       {
         asked,
@@ -24,7 +25,6 @@ export function expansionSection(shown: Expanded, state: PageState, width: numbe
         point: asked.point ?? reading?.point ?? '0',
         candidates: reading?.candidates ?? [],
         termCount: answer.terms.length,
-        code: state.code,
       },
       choose,
     ),
@@ -48,7 +48,7 @@ function facts(answer: ExpandAnswer, asked: Question): HTMLElement {
   if (answer.oscillating) add(t('oscillating'));
   if (answer.bound) {
     if (answer.bound.value === null) add(t('unbounded', answer.bound.place ?? '?'), 'caution');
-    else add([h('span', { class: 'muted' }, `${t('bound')} `), h('strong', { id: 'bound' }, answer.bound.value), answer.bound.factor ? [' · ', h('code', {}, answer.bound.factor)] : null]);
+    else add([h('span', { class: 'muted' }, `${asked.interval ? t('boundOn', ...asked.interval) : t('bound')} `), h('strong', { id: 'bound' }, answer.bound.value), answer.bound.factor ? [' · ', h('code', {}, answer.bound.factor)] : null]);
   }
   if (answer.needed) lines.push(...neededLines(answer, asked));
   if (answer.at) add(`${t('at')} ${t('atRow', answer.at.argument, answer.at.function, answer.at.sum, answer.at.error)}`);

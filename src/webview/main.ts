@@ -72,7 +72,7 @@ function content(now: PageState): Child[] {
     now.stale !== null && h('p', { class: 'caution message', role: 'status' }, t('stale')),
     ...(shown.kind === 'nothing' ? [h('p', { class: 'muted message' }, t('empty'))] : []),
     ...(shown.kind === 'failure' ? failure(shown.message, shown.candidates, shown.asked) : []),
-    ...(shown.kind === 'expansion' ? [into(now), ...expansionSection(shown, now, Math.max(220, root.clientWidth - 2), choose)] : []),
+    ...(shown.kind === 'expansion' ? expansionSection(shown, into(now), Math.max(220, root.clientWidth - 2), choose) : []),
     ...(shown.kind === 'fit' ? [...fitSection(shown, settle), into(now)] : []),
     ...(shown.kind === 'guard' ? [...guardSection(shown, settle), into(now)] : []),
     history(now),
@@ -104,7 +104,7 @@ function failure(message: string, candidates: readonly string[], asked: Question
   return [
     h('p', { class: 'caution message', role: 'status', id: 'failure' }, message),
     candidates.length > 1 && h('div', { class: 'candidates', role: 'group', 'aria-label': t('notSure') }, h('span', {}, t('notSure')), ...candidates.map((candidate, i) => h('button', { type: 'button', id: `candidate-${i}`, on: { click: () => choose({ variable: candidate }) } }, candidate))),
-    expandControls({ asked, origins: {}, variable: asked.variable ?? '', point: asked.point ?? '0', candidates, termCount: asked.terms ?? 4, code: false }, choose),
+    expandControls({ asked, origins: {}, variable: asked.variable ?? '', point: asked.point ?? '0', candidates, termCount: asked.terms ?? 4 }, choose),
   ];
 }
 
@@ -123,7 +123,7 @@ function into(now: PageState): HTMLElement {
   return h(
     'div',
     { class: 'into' },
-    now.actions.length > 0 && h('div', { class: 'edits', role: 'group', 'aria-label': t('actions') }, ...now.actions.map(({ label }, i) => h('button', { type: 'button', id: `apply-${i}`, class: i === 0 ? 'primary' : 'secondary', on: { click: () => send({ kind: 'apply', index: i }) } }, label))),
+    now.actions.length > 0 && h('div', { class: 'edits', role: 'group', 'aria-label': t('actions') }, ...now.actions.map(({ label, title }, i) => h('button', { type: 'button', title, id: `apply-${i}`, class: i === 0 ? 'primary' : 'secondary', on: { click: () => send({ kind: 'apply', index: i }) } }, label))),
     ready && h('div', { class: 'copies', role: 'group', 'aria-label': t('copy') }, h('span', { class: 'muted', 'aria-hidden': 'true' }, t('copy')), ...copies.map(([what, label]) => h('button', { type: 'button', class: 'link', id: `copy-${what}`, 'aria-label': `${t('copy')} ${label}`, on: { click: () => send({ kind: 'copy', what }) } }, label))),
   );
 }

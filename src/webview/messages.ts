@@ -38,7 +38,7 @@ export interface PageState {
   readonly pinned: boolean;
   /** Says that the text has changed since; null while it has not. */
   readonly stale: string | null;
-  readonly actions: readonly { readonly label: string }[];
+  readonly actions: readonly { readonly label: string; readonly title: string }[];
   readonly history: readonly HistoryEntry[];
 }
 

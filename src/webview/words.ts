@@ -26,6 +26,7 @@ export const WORDS = {
   more: 'One term more',
   order: 'order',
   bound: 'proven bound',
+  boundOn: 'proven bound on [{0}, {1}]',
   needed: 'needed',
   neededFor: '{0} terms keep {1}',
   neededOne: 'One term keeps {0}',

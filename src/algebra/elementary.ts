@@ -5,7 +5,7 @@ import type { Kernel } from './kernel.ts';
 import { absolute, divideElements, exponential, logarithm, rationalPower } from './powers.ts';
 import { addElements, isQuotient, multiplyElements, negateElement, scaleElement } from './quotient.ts';
 import { isRealSet, NEGATIVE, NIL } from './signs.ts';
-import { byImaginaryUnit, multipleOfKernel, singleKernel, timesI } from './split.ts';
+import { additiveTerms, byImaginaryUnit, multipleOfKernel, rationalMultiple, singleKernel, timesI } from './split.ts';
 import { cosineOfPi, sineOfPi } from './unitCircle.ts';
 import type { Element } from './types.ts';
 
@@ -53,6 +53,8 @@ function sine(ctx: Context, a: Element): Element {
   if (c) return sqrt(ctx, plus(ctx, Q.ONE, negateElement(squared(ctx, c))));
   const t = argumentOf(ctx, a, 'atan');
   if (t) return divideElements(ctx, t, sqrt(ctx, plus(ctx, Q.ONE, squared(ctx, t))));
+  const half = halfTurns(ctx, a);
+  if (half) return times(ctx, half.sign, sine(ctx, half.rest));
   return opaque(ctx, 'sin', [a]);
 }
 
@@ -74,7 +76,34 @@ function cosine(ctx: Context, a: Element): Element {
   if (s) return sqrt(ctx, plus(ctx, Q.ONE, negateElement(squared(ctx, s))));
   const t = argumentOf(ctx, a, 'atan');
   if (t) return divideElements(ctx, Q.ONE, sqrt(ctx, plus(ctx, Q.ONE, squared(ctx, t))));
+  const half = halfTurns(ctx, a);
+  if (half) return times(ctx, half.sign, cosine(ctx, half.rest));
   return opaque(ctx, 'cos', [a]);
+}
+
+/** a = pi m + rest with m an integer by the assumptions, not zero: (-1)^m and the rest; else null. */
+function halfTurns(ctx: Context, a: Element): { readonly sign: Element; readonly rest: Element } | null {
+  const piIndex = constantKernel(ctx, 'pi').index;
+  let turns: Element = Q.ZERO;
+  let rest: Element = Q.ZERO;
+  for (const t of additiveTerms(ctx, a)) {
+    const { coefficient, unit } = rationalMultiple(t);
+    const whole =
+      isQuotient(unit) &&
+      coefficient.den === 1n &&
+      unit.denominator.length === 0 &&
+      unit.numerator.length === 1 &&
+      unit.monomial.kernels.includes(piIndex) &&
+      unit.monomial.kernels.every((k, i) => {
+        const e = unit.monomial.exponents[i];
+        if (k === piIndex) return e === 1;
+        const { shape } = ctx.table.kernels[k] as Kernel;
+        return shape.kind === 'parameter' && ctx.isInteger(shape.name) && typeof e === 'number' && e > 0;
+      });
+    if (whole) turns = plus(ctx, turns, t);
+    else rest = plus(ctx, rest, t);
+  }
+  return isZeroRational(turns) ? null : { sign: exponential(ctx, timesI(ctx, turns)), rest };
 }
 
 /** 2q modulo 4 where q is a multiple of 1/2, else null: how many quarter turns pi*q is. */

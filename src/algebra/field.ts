@@ -9,7 +9,8 @@ import { callFunction } from './functions.ts';
 import { fromExpression } from './fromExpression.ts';
 import { createKernelTable, type Kernel } from './kernel.ts';
 import { divideElements, exponential, generalPower, logarithm } from './powers.ts';
-import { addElements, elementKey, isQuotient, kernelsOf, multiplyElements, negateElement } from './quotient.ts';
+import { polynomialKey, type Polynomial } from './polynomial.ts';
+import { addElements, elementFromPolynomial, elementKey, isQuotient, kernelsOf, multiplyElements, negateElement } from './quotient.ts';
 import { createSignRules, isRealSet, NEGATIVE, NIL, NOT_REAL, POSITIVE, REAL, ANY, type SignSet } from './signs.ts';
 import { byImaginaryUnit } from './split.ts';
 import { toExpression } from './toExpression.ts';
@@ -28,7 +29,8 @@ export function createField(assumptions: readonly Assumption[], budget: Budget, 
   const facts = createAssumptionStore(table);
   const needed = new Set<string>();
   const zero = createZeroTest(table, describe, facts, (a) => deepZero(ctx, a));
-  const signs = createSignRules(table, facts, (k) => signOfOpaque(k));
+  const signs = createSignRules(table, facts, (k) => signOfOpaque(k), (f) => signOfSum(f));
+  const sums = new Map<string, SignSet>();
   const ctx: Context = {
     table,
     budget,
@@ -65,6 +67,17 @@ export function createField(assumptions: readonly Assumption[], budget: Budget, 
   }
 
   const isConstant = (a: Element): boolean => ![...allKernels(table, a)].some((k) => (table.kernels[k] as Kernel).shape.kind === 'parameter');
+
+  function signOfSum(f: Polynomial): SignSet {
+    const key = polynomialKey(f);
+    let s = sums.get(key);
+    if (s === undefined) {
+      const a = elementFromPolynomial(table, f);
+      s = isConstant(a) ? constantSign(a) : ANY;
+      sums.set(key, s);
+    }
+    return s;
+  }
 
   function constantSign(a: Element): SignSet {
     for (const precision of SIGN_PRECISIONS) {

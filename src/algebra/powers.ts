@@ -2,6 +2,7 @@
 import { Q, type Rational } from '../expression/index.ts';
 import { constantKernel, expKernel, imaginaryKernel, integerKernel, isZeroRational, kernelElement, logKernel, minus, powerKernel, rationalOf, undecided, type Context } from './context.ts';
 import { compareExponents, exponentFromRational, isWhole, multiplyExponents, type Exponent } from './exponent.ts';
+import { denestedCubeRoot, denestedSquareRoot, dependentSquareRoot } from './denest.ts';
 import { factorInteger } from './integers.ts';
 import type { Kernel } from './kernel.ts';
 import { monomialOf, multiplyMonomials, UNIT } from './monomial.ts';
@@ -132,7 +133,32 @@ export function rationalPower(ctx: Context, a: Element, r: Rational): Element {
 /** u^r for a non-negative element without denominator. */
 function radicandRationalPower(ctx: Context, u: Element, r: Rational): Element {
   if (r.den === 1n) return wholePower(ctx.table, u, Number(r.num));
+  if (isNumericRadicand(ctx, u) && !ctx.table.find(`radicand ${elementKey(u)}`)) {
+    if (r.den % 2n === 0n) {
+      const root = denestedSquareRoot(ctx, u) ?? (r.den === 2n ? dependentSquareRoot(ctx, u) : null);
+      if (root) return rationalPower(ctx, root, Q.multiply(r, Q.rational(2)));
+    }
+    if (r.den % 3n === 0n) {
+      const root = denestedCubeRoot(ctx, u);
+      if (root) return rationalPower(ctx, root, Q.multiply(r, Q.rational(3)));
+    }
+  }
   return radicandPower(ctx, u, exponentFromRational(r));
+}
+
+const isNumericRadicand = (ctx: Context, u: Element): boolean => isQuotient(u) && u.denominator.length === 0 && [...kernelsIn(u.numerator)].every((k) => ctx.table.relations[k]?.numeric === true);
+
+/** sqrt(x + i y) for numbers whose modulus is rational, by DLMF 4.8(i) halving of the argument; else null. */
+function complexSquareRoot(ctx: Context, a: Element): Element | null {
+  const { re, im } = byImaginaryUnit(ctx, a);
+  const x = rationalOf(re);
+  const y = rationalOf(im);
+  if (!x || !y || y.num === 0n) return null;
+  const modulus = rationalOf(rationalPower(ctx, Q.add(Q.multiply(x, x), Q.multiply(y, y)), Q.HALF));
+  if (!modulus) return null;
+  const half = (sign: 1 | -1): Element => rationalPower(ctx, Q.multiply(Q.HALF, sign === 1 ? Q.add(modulus, x) : Q.subtract(modulus, x)), Q.HALF);
+  const imaginary = times(ctx, kernelElement(ctx, imaginaryKernel(ctx)), half(-1));
+  return plus(ctx, half(1), y.num < 0n ? negateElement(imaginary) : imaginary);
 }
 
 /** base^r where the sign of the base is not known. */
@@ -146,6 +172,10 @@ function openPower(ctx: Context, base: Element, r: Rational, exponent: Exponent)
     if (principal && compareExponents(e, -1) > 0 && compareExponents(e, 1) <= 0 && (!kernel.relation || kernel.shape.kind === 'radicand')) {
       return kernelElement(ctx, kernel, multiplyExponents(e, exponent));
     }
+  }
+  if (r.den === 2n) {
+    const root = complexSquareRoot(ctx, base);
+    if (root) return wholePower(ctx.table, root, Number(r.num));
   }
   const parts = partsOf(base);
   const simple = parts.denominator.length === 0 && parts.monomial.exponents.every((e) => isWhole(e) && e > 0);
@@ -297,8 +327,25 @@ export function logarithm(ctx: Context, a: Element): Element {
   if (single && kernel && !negative && kernel.shape.kind !== 'exp' && kernel.shape.kind !== 'power' && compareExponents(single.exponent, -1) > 0 && compareExponents(single.exponent, 1) <= 0) {
     return plus(ctx, result, multiple(kernelElement(ctx, logKernel(ctx, kernel.shape.kind === 'radicand' ? kernel.shape.base : kernelElement(ctx, kernel))), single.exponent));
   }
-  return plus(ctx, result, kernelElement(ctx, logKernel(ctx, base)));
+  return plus(ctx, result, logarithmOfNumber(ctx, base) ?? kernelElement(ctx, logKernel(ctx, base)));
 }
+
+/** log(x + i y) = log(x^2 + y^2)/2 + i atan2(y, x) for real algebraic numbers x and y, y not zero; else null. */
+function logarithmOfNumber(ctx: Context, a: Element): Element | null {
+  const { re, im } = byImaginaryUnit(ctx, a);
+  if (isZeroRational(im) || !isRealAlgebraic(ctx, re) || !isRealAlgebraic(ctx, im)) return null;
+  const i = kernelElement(ctx, imaginaryKernel(ctx));
+  const pi = kernelElement(ctx, constantKernel(ctx, 'pi'));
+  const size = scaleElement(logarithm(ctx, plus(ctx, times(ctx, re, re), times(ctx, im, im))), Q.HALF);
+  const up = signOfReal(ctx, im);
+  const right = isZeroRational(re) ? 0 : signOfReal(ctx, re);
+  if (up === null || right === null) return null;
+  if (right === 0) return plus(ctx, size, times(ctx, i, scaleElement(pi, Q.rational(up, 2))));
+  const angle = ctx.call('atan', [divideElements(ctx, im, re)]);
+  return plus(ctx, size, times(ctx, i, right > 0 ? angle : plus(ctx, angle, scaleElement(pi, Q.rational(up)))));
+}
+const signOfReal = (ctx: Context, a: Element): -1 | 1 | null => (isQuotient(a) ? ctx.signOfNumber(a) : a.num > 0n ? 1 : -1);
+const isRealAlgebraic = (ctx: Context, a: Element): boolean => !isQuotient(a) || (isRealSet(ctx.signs.of(a)) && isNumericRadicand(ctx, a) && a.monomial.kernels.every((k) => ctx.table.relations[k]?.numeric === true));
 
 /** a^b, principal value, for any exponent. */
 export function generalPower(ctx: Context, a: Element, b: Element): Element {

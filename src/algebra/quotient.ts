@@ -27,6 +27,7 @@ import {
   type Term,
 } from './polynomial.ts';
 import { gcdPolynomials } from './polynomialGcd.ts';
+import { squareFreeFactors } from './squareFree.ts';
 import type { CompoundElement, DenominatorFactor, Element } from './types.ts';
 
 export type Factor = DenominatorFactor;
@@ -484,7 +485,8 @@ export function invertElement(table: KernelTable, a: Element): Element {
 function withDenominator(table: KernelTable, a: Quotient, b: Quotient): Element {
   const content = Q.divide(a.content, b.content);
   const monomial = multiplyMonomials(a.monomial, invertMonomial(b.monomial));
-  const denominator = isOnePolynomial(b.numerator) ? a.denominator : insertFactor(table, a.denominator, b.numerator, 1);
+  let denominator = a.denominator;
+  if (!isOnePolynomial(b.numerator)) for (const f of squareFreeFactors(b.numerator, table.check)) denominator = insertFactor(table, denominator, f.polynomial, f.exponent);
   return normalise(table, content, monomial, a.numerator, denominator, true);
 }
 

@@ -73,8 +73,8 @@ export interface SignRules {
   of(a: Element): SignSet;
 }
 
-/** `decideCall` gives the sign of opaque kernels (calls, constants by name); it may use balls. */
-export function createSignRules(table: KernelTable, facts: SignFacts, decide: (k: Kernel, rules: SignRules) => SignSet): SignRules {
+/** `decide` gives the sign of opaque kernels, `ofNumber` that of a sum without parameters; both may use balls. */
+export function createSignRules(table: KernelTable, facts: SignFacts, decide: (k: Kernel, rules: SignRules) => SignSet, ofNumber: (f: Polynomial) => SignSet): SignRules {
   const known = new Map<number, SignSet>();
   const rules: SignRules = {
     ofKernel(k) {
@@ -91,7 +91,9 @@ export function createSignRules(table: KernelTable, facts: SignFacts, decide: (k
         const k = table.kernels[m.kernels[i] as number] as Kernel;
         const e = m.exponents[i] as Exponent;
         // exp(r unit) has the sign of exp for every r.
-        const own = k.shape.kind === 'exp' || k.shape.kind === 'power' ? rules.ofKernel(k) : powerSign(rules.ofKernel(k), e);
+        // (-1)^n for an integer n.
+        const unit = k.relation?.period === 2 && k.shape.kind === 'exp' && isWhole(e);
+        const own = unit ? POSITIVE | NEGATIVE : k.shape.kind === 'exp' || k.shape.kind === 'power' ? rules.ofKernel(k) : powerSign(rules.ofKernel(k), e);
         s = timesSigns(s, own);
       }
       return s;
@@ -109,7 +111,10 @@ export function createSignRules(table: KernelTable, facts: SignFacts, decide: (k
       const narrowed = stated === ANY ? s : s & stated || stated;
       if (narrowed === POSITIVE || narrowed === NEGATIVE) return narrowed;
       const bounded = facts.byIntervals(f);
-      if (bounded === ANY) return narrowed;
+      if (bounded === ANY) {
+        const value = ofNumber(f);
+        return value === ANY ? narrowed : value;
+      }
       return narrowed & bounded || bounded;
     },
     of(a) {

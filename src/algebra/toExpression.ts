@@ -1,13 +1,14 @@
 /** Elements as a person writes them: numbers in front, powers of one base together, radicals joined, sums in natural order. */
 import { build, Q, type Expression, type Rational } from '../expression/index.ts';
-import { kernelElement, rationalOf, type Context } from './context.ts';
+import { constantKernel, kernelElement, rationalOf, type Context } from './context.ts';
 import { exponentToRational, numeratorOf, denominatorOf, type Exponent } from './exponent.ts';
 import { linearFactors } from './linearFactors.ts';
 import type { Kernel } from './kernel.ts';
-import { isUnit, monomialKey, type Monomial } from './monomial.ts';
-import { isOnePolynomial, kernelsIn, type Polynomial, type Term } from './polynomial.ts';
-import { addElements, elementKey, isQuotient, multiplyElements, negateElement, partsOf, scaleElement, type Factor } from './quotient.ts';
+import { exponentIn, isUnit, monomialKey, multiplyMonomials, UNIT, withoutKernel, type Monomial } from './monomial.ts';
+import { contentOf, divideByInteger, isOnePolynomial, kernelsIn, ONE_POLYNOMIAL, shiftPolynomial, type Polynomial, type Term } from './polynomial.ts';
+import { addElements, elementKey, invertElement, isQuotient, kernelsOf, multiplyElements, negateElement, normalise, partsOf, reduceByRelations, scaleElement, type Factor, type Quotient } from './quotient.ts';
 import { asElement } from './split.ts';
+import { squareFreeFactors } from './squareFree.ts';
 import type { Element } from './types.ts';
 
 /** base^exponent, gathered before writing. */
@@ -18,22 +19,97 @@ interface Power {
   exponent: Element;
 }
 
-const RANK = { constant: 0, radical: 1, imaginary: 2, parameter: 3, function: 4, sum: 5 } as const;
+const RANK = { imaginary: 0, radical: 1, constant: 2, parameter: 3, sum: 4, function: 5, root: 6 } as const;
 
 export function toExpression(ctx: Context, a: Element): Expression {
   if (!isQuotient(a)) return numberExpression(a);
+  const cosines = inCosines(ctx, a);
+  if (cosines) return cosines;
   const { content, monomial, numerator, denominator } = a;
   if (isOnePolynomial(numerator)) return writeProduct(ctx, content, monomial, [], denominator);
-  const negative = leadingIsNegative(ctx, content, numerator);
-  if (isUnit(monomial) && denominator.length === 0 && distributes(ctx, content, numerator)) return writeSum(ctx, content, numerator);
-  const split = linearFactors(numerator, (k) => (ctx.table.kernels[k] as Kernel).shape.kind === 'parameter', !isUnit(monomial));
+  if (denominator.length === 0 && isRealAlgebraic(ctx, a)) return writeAlgebraic(ctx, content, shiftPolynomial(numerator, monomial));
+  const repeated = repeatedFactors(ctx, numerator);
+  if (repeated === null && isUnit(monomial) && denominator.length === 0 && distributes(ctx, content, numerator)) return writeSum(ctx, content, numerator);
+  const isParameter = (k: number): boolean => (ctx.table.kernels[k] as Kernel).shape.kind === 'parameter';
+  const split = linearFactors(numerator, isParameter, !isUnit(monomial)) ?? repeated;
   if (split) {
     const factors = split.map((f): Factor => ({ polynomial: f.polynomial, exponent: -f.exponent }));
     return writeProduct(ctx, content, monomial, factors, denominator);
   }
-  const magnitude = negative ? Q.negate(content) : content;
-  const sum = writeSum(ctx, negative ? Q.MINUS_ONE : Q.ONE, numerator);
-  return writeProduct(ctx, magnitude, monomial, [{ base: () => sum, order: 0 }], denominator);
+  // The sign goes into the sum unless that leaves only minus signs: (1 - a)/2, but -(a + 1)/2.
+  const inside = content.num < 0n && numerator.some((t) => t.coefficient < 0n);
+  const sum = writeSum(ctx, inside ? Q.MINUS_ONE : Q.ONE, numerator);
+  return writeProduct(ctx, inside ? Q.negate(content) : content, monomial, [{ base: () => sum, order: 0 }], denominator);
+}
+
+/** (a + c)^2 as it stands, where the sum is a power. */
+function repeatedFactors(ctx: Context, f: Polynomial): readonly Factor[] | null {
+  if (f.length > 60 || f.length < 3) return null;
+  const factors = squareFreeFactors(f, ctx.table.check);
+  return factors.some((x) => x.exponent > 1) ? factors : null;
+}
+
+const isRealAlgebraic = (ctx: Context, a: Element): boolean => [...kernelsOf(a)].every((k) => (ctx.table.kernels[k] as Kernel).shape.kind === 'integer');
+
+/** Sums of radicals of integers over one denominator: (1 + sqrt 5)/2, (sqrt 6 + sqrt 2)/4. */
+function writeAlgebraic(ctx: Context, content: Rational, sum: Polynomial): Expression {
+  const terms = reduceByRelations(ctx.table, sum);
+  const common = contentOf(terms);
+  const f = divideByInteger(terms, common);
+  let c = Q.multiply(content, Q.rational(common));
+  if (c.den === 1n) return writeSum(ctx, c, f);
+  const inside = c.num < 0n && f.some((t) => t.coefficient < 0n);
+  if (inside) c = Q.negate(c);
+  const body = writeSum(ctx, inside ? Q.MINUS_ONE : Q.ONE, f);
+  return writeProduct(ctx, c, UNIT, [{ base: () => body, order: 0 }], []);
+}
+
+/** Powers of 2 cos(2 pi/m) as sums of cosines of multiples, which is how such numbers are written; null where there is no such kernel. */
+function inCosines(ctx: Context, a: Quotient): Expression | null {
+  const kernels = [...kernelsOf(a)].filter((k) => (ctx.table.kernels[k] as Kernel).shape.kind === 'cosine');
+  const [kernel] = kernels;
+  if (kernels.length !== 1 || kernel === undefined || a.denominator.some((f) => kernelsIn(f.polynomial).has(kernel))) return null;
+  const { shape } = ctx.table.kernels[kernel] as Kernel;
+  if (shape.kind !== 'cosine') return null;
+  const byAngle = new Map<string, { angle: Rational; coefficient: Element }>();
+  const put = (k: number, coefficient: Element): void => {
+    // cos(pi r), r brought into [0, 1/2].
+    let r = Q.multiply(shape.angle, Q.rational(k));
+    r = Q.subtract(r, Q.rational(2n * Q.floor(Q.multiply(r, Q.HALF))));
+    if (Q.compare(r, Q.ONE) > 0) r = Q.subtract(Q.rational(2), r);
+    const negative = Q.compare(r, Q.HALF) > 0;
+    if (negative) r = Q.subtract(Q.ONE, r);
+    if (Q.equal(r, Q.HALF)) return;
+    const signed = negative ? negateElement(coefficient) : coefficient;
+    const key = Q.toText(r);
+    const known = byAngle.get(key);
+    if (known) known.coefficient = addElements(ctx.table, known.coefficient, signed);
+    else byAngle.set(key, { angle: r, coefficient: signed });
+  };
+  for (const t of a.numerator) {
+    const monomial = multiplyMonomials(t.monomial, a.monomial);
+    const degree = exponentIn(monomial, kernel);
+    if (typeof degree !== 'number' || degree < 0) return null;
+    const rest = normalise(ctx.table, Q.multiply(a.content, Q.rational(t.coefficient)), withoutKernel(monomial, kernel), ONE_POLYNOMIAL, a.denominator, false);
+    let binomial = 1n;
+    for (let i = 0; 2 * i <= degree; i += 1) {
+      if (i > 0) binomial = (binomial * BigInt(degree - i + 1)) / BigInt(i);
+      const k = degree - 2 * i;
+      put(k, scaleElement(rest, Q.rational(k === 0 ? binomial : 2n * binomial)));
+    }
+  }
+  const terms = [...byAngle.values()].filter((x) => isQuotient(x.coefficient) || x.coefficient.num !== 0n).sort((x, y) => Q.compare(x.angle, y.angle));
+  return build.sum(
+    ...terms.map(({ angle, coefficient }) => {
+      if (angle.num === 0n) return toExpression(ctx, coefficient);
+      const sine = Q.compare(angle, Q.rational(1, 4)) > 0;
+      const r = sine ? Q.subtract(Q.HALF, angle) : angle;
+      const call = ctx.table.intern(`written ${sine ? 'sin' : 'cos'} ${Q.toText(r)}`, () => ({
+        shape: { kind: 'call', id: sine ? 'sin' : 'cos', args: [scaleElement(kernelElement(ctx, constantKernel(ctx, 'pi')), r)] },
+      }));
+      return toExpression(ctx, multiplyElements(ctx.table, coefficient, kernelElement(ctx, call)));
+    }),
+  );
 }
 
 const numberExpression = (r: Rational): Expression => (r.num < 0n ? build.negation(build.number(Q.negate(r))) : build.number(r));
@@ -41,8 +117,10 @@ const numberExpression = (r: Rational): Expression => (r.num < 0n ? build.negati
 /** Whether c * (sum) is better written term by term: numbers always when the factor is whole, other sums when a term becomes plainer. */
 function distributes(ctx: Context, c: Rational, f: Polynomial): boolean {
   if (Q.isOne(c) || (c.num === -1n && c.den === 1n)) return true;
-  const numeric = [...kernelsIn(f)].every((k) => (ctx.table.kernels[k] as Kernel).shape.kind !== 'parameter');
-  if (c.den === 1n) return numeric;
+  const shapes = [...kernelsIn(f)].map((k) => ctx.table.kernels[k] as Kernel);
+  const numeric = shapes.every((k) => k.shape.kind !== 'parameter');
+  if (numeric && (c.den === 1n || shapes.some((k) => k.relation?.numeric !== true))) return true;
+  if (c.den === 1n) return false;
   return f.some((t) => (t.coefficient * c.num) % c.den === 0n);
 }
 
@@ -62,21 +140,12 @@ function degrees(ctx: Context, m: Monomial): readonly [number, number] {
 function naturalOrder(ctx: Context, f: Polynomial): readonly Term[] {
   const numeric = [...kernelsIn(f)].every((k) => ctx.table.relations[k]?.numeric === true);
   const ranked = f.map((t, i) => ({ t, i, d: degrees(ctx, t.monomial) }));
-  ranked.sort((x, y) => y.d[0] - x.d[0] || y.d[1] - x.d[1] || x.i - y.i);
+  const imaginary = (m: Monomial): number => (m.kernels.some((k) => (ctx.table.kernels[k] as Kernel).shape.kind === 'imaginary') ? 1 : 0);
+  ranked.sort((x, y) => y.d[0] - x.d[0] || imaginary(x.t.monomial) - imaginary(y.t.monomial) || y.d[1] - x.d[1] || x.i - y.i);
   const terms = ranked.map((r) => r.t);
   // Numbers are written with the rational part first: 1 + sqrt(5).
-  return numeric ? [...terms].reverse() : terms;
+  return numeric ? [...terms].sort((x, y) => imaginary(x.monomial) - imaginary(y.monomial) || terms.indexOf(y) - terms.indexOf(x)) : terms;
 }
-
-const leadingIsNegative = (ctx: Context, c: Rational, f: Polynomial): boolean => {
-  const order = naturalOrder(ctx, f);
-  const first = order[0];
-  const last = order[order.length - 1];
-  if (!first || !last) return false;
-  const sign = c.num < 0n;
-  const negative = (t: Term): boolean => t.coefficient < 0n !== sign;
-  return negative(first) && negative(last);
-};
 
 function writeSum(ctx: Context, c: Rational, f: Polynomial): Expression {
   let order = naturalOrder(ctx, f);
@@ -85,7 +154,40 @@ function writeSum(ctx: Context, c: Rational, f: Polynomial): Expression {
   const last = order[order.length - 1];
   // 1 - v^2 rather than -v^2 + 1.
   if (first && last && signed(first).num < 0n && signed(last).num > 0n) order = [...order].reverse();
-  return build.sum(...order.map((t) => writeProduct(ctx, signed(t), t.monomial, [], [])));
+  const written = joinLogarithms(ctx, order.map((t) => ({ coefficient: signed(t), monomial: t.monomial })));
+  return build.sum(...written);
+}
+
+/** Terms as trees; logarithms of numbers and constants with equal coefficients (up to sign) become one: log(2 pi)/2, log(3/2). */
+function joinLogarithms(ctx: Context, terms: readonly { readonly coefficient: Rational; readonly monomial: Monomial }[]): readonly Expression[] {
+  const argumentOf = (m: Monomial): Element | null => {
+    const [k] = m.kernels;
+    const shape = m.kernels.length === 1 && m.exponents[0] === 1 && k !== undefined ? (ctx.table.kernels[k] as Kernel).shape : null;
+    if (shape?.kind !== 'log') return null;
+    const plain = !isQuotient(shape.argument) || [...kernelsOf(shape.argument)].every((x) => (ctx.table.kernels[x] as Kernel).shape.kind === 'constant');
+    return plain ? shape.argument : null;
+  };
+  const groups = new Map<string, number[]>();
+  terms.forEach((t, i) => {
+    if (!argumentOf(t.monomial)) return;
+    const key = Q.toText(Q.absolute(t.coefficient));
+    groups.set(key, [...(groups.get(key) ?? []), i]);
+  });
+  const done = new Set<number>();
+  return terms.flatMap((t, i): Expression[] => {
+    if (done.has(i)) return [];
+    const group = argumentOf(t.monomial) ? (groups.get(Q.toText(Q.absolute(t.coefficient))) ?? []) : [];
+    if (group.length < 2) return [writeProduct(ctx, t.coefficient, t.monomial, [], [])];
+    let argument: Element = Q.ONE;
+    for (const j of group) {
+      done.add(j);
+      const member = terms[j];
+      const x = member ? argumentOf(member.monomial) : null;
+      if (member && x) argument = multiplyElements(ctx.table, argument, member.coefficient.num < 0n === t.coefficient.num < 0n ? x : invertElement(ctx.table, x));
+    }
+    const log = build.call('log', toExpression(ctx, argument));
+    return [writeProduct(ctx, t.coefficient, UNIT, [{ base: () => log, order: 0 }], [])];
+  });
 }
 
 interface ExtraFactor {
@@ -125,7 +227,7 @@ function writeProduct(ctx: Context, content: Rational, monomial: Monomial, extra
         put(elementKey(shape.base), RANK.function, index, () => toExpression(ctx, shape.base), scaleElement(shape.unit, r));
         break;
       case 'radicand':
-        put(elementKey(shape.base), RANK.sum, index, () => toExpression(ctx, shape.base), r);
+        put(elementKey(shape.base), RANK.root, index, () => toExpression(ctx, shape.base), r);
         break;
       case 'parameter':
         put(elementKey(kernelElement(ctx, kernel)), RANK.parameter, index, () => build.symbol(shape.name), r);
@@ -151,16 +253,24 @@ function writeProduct(ctx: Context, content: Rational, monomial: Monomial, extra
       if (f.exponent % 2 === 1) flipped = !flipped;
     }
   });
-  const sums: ExtraFactor[] = [];
   for (const x of extra) {
     if (isFactor(x)) polynomialPower(x, 0);
-    else sums.push(x);
+    else put('sum', RANK.sum, x.order, x.base, Q.ONE);
   }
 
   joinQuotients(ctx, powers, monomial);
-  const ordered = [...powers.values()].sort((x, y) => x.rank - y.rank || x.order - y.order);
+  const rankOf = (p: Power): number => (rationalOf(p.exponent) ? p.rank : Math.max(p.rank, RANK.function));
+  const ordered = [...powers.values()].sort((x, y) => rankOf(x) - rankOf(y) || x.order - y.order);
   const numbers: Expression[] = [];
-  for (const [q, value] of [...radicals].sort((x, y) => x[0] - y[0])) numbers.push(build.power(build.number(value), Q.rational(1, q)));
+  // sqrt(2) sqrt(pi) is written sqrt(2 pi).
+  const halves = [...powers.values()].filter((p) => (p.rank === RANK.parameter || p.rank === RANK.constant) && isHalf(p.exponent));
+  const [half] = halves;
+  for (const [q, value] of [...radicals].sort((x, y) => x[0] - y[0])) {
+    if (q === 2 && halves.length === 1 && half) {
+      half.exponent = Q.ZERO;
+      numbers.push(build.power(build.product(build.number(value), half.base()), Q.HALF));
+    } else numbers.push(build.power(build.number(value), Q.rational(1, q)));
+  }
   let placed = false;
   const place = (): void => {
     if (!placed) top.push(...numbers);
@@ -174,7 +284,7 @@ function writeProduct(ctx: Context, content: Rational, monomial: Monomial, extra
   };
   for (const p of ordered) {
     if (p.rank > RANK.radical) place();
-    if (p.rank > RANK.parameter) placeExponential();
+    if (rankOf(p) > RANK.sum) placeExponential();
     const r = rationalOf(p.exponent);
     if (r && r.num === 0n) continue;
     if (r && r.num < 0n) bottom.push(raised(p.base(), numberExpression(Q.negate(r)), Q.negate(r)));
@@ -182,7 +292,6 @@ function writeProduct(ctx: Context, content: Rational, monomial: Monomial, extra
   }
   place();
   placeExponential();
-  for (const s of sums) top.push(s.base());
 
   const size = Q.absolute(content);
   if (size.num !== 1n || top.length === 0) {
@@ -194,6 +303,7 @@ function writeProduct(ctx: Context, content: Rational, monomial: Monomial, extra
   return content.num < 0n !== flipped ? build.negation(whole) : whole;
 }
 
+const isHalf = (e: Element): boolean => 'num' in e && e.num === 1n && e.den === 2n;
 const raised = (base: Expression, exponent: Expression, r: Rational): Expression => (Q.isOne(r) ? base : build.power(base, exponent));
 
 function exponentialExpression(ctx: Context, exponent: Element): Expression {

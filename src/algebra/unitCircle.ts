@@ -5,7 +5,9 @@ import type { Kernel } from './kernel.ts';
 import { monomialOf, UNIT } from './monomial.ts';
 import type { Polynomial, Term } from './polynomial.ts';
 import { addElements, multiplyElements, negateElement, scaleElement } from './quotient.ts';
+import { dependentSquareRoot } from './denest.ts';
 import { positiveRationalPower, radicandPower } from './radicals.ts';
+import { rationalMultiple } from './split.ts';
 import type { Element } from './types.ts';
 
 const HALF = Q.HALF;
@@ -53,7 +55,10 @@ function cosineInFirstQuadrant(ctx: Context, q: Rational): Element {
 /** factor * sqrt(n + sign r). */
 function conjugate(ctx: Context, n: number, r: Element, sign: 1 | -1, factor: Element): Element {
   const own = plus(ctx, Q.rational(n), sign === 1 ? r : negateElement(r));
-  return multiplyElements(ctx.table, factor, nested(ctx, own));
+  const size = Q.absolute(rationalMultiple(own).coefficient);
+  const unit = scaleElement(own, Q.reciprocal(size));
+  const outside = multiplyElements(ctx.table, factor, positiveRationalPower(ctx, size, HALF));
+  return multiplyElements(ctx.table, outside, dependentSquareRoot(ctx, unit) ?? nested(ctx, unit));
 }
 
 const MAX_DEGREE = 40;

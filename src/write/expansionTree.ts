@@ -1,7 +1,7 @@
 /** An expansion as trees that are ready to be written: its sum, term by term, and its O-term. */
 import { build, mapChildren, Q, sameExpression, walk, type Expression } from '../expression/index.ts';
 import type { Expansion, ExpansionRemainder, ExpansionTerm } from '../expand/expansion.ts';
-import { arrange, factorsOf, type Factors, multiplyFactors, NO_FACTORS, powerFactors, splitSign } from './layout.ts';
+import { arrange, commonFraction, factorsOf, type Factors, multiplyFactors, NO_FACTORS, powerFactors, splitSign } from './layout.ts';
 
 type Placement = 'inside' | 'outside';
 
@@ -32,14 +32,18 @@ function negated(e: Expression): Expression {
   return negative ? magnitude : build.negation(e);
 }
 
-/** A sum as a coefficient becomes one factor, with its common sign in front. */
+/** A sum as a coefficient becomes one factor, its common fraction and sign in front. */
 function coefficientFactors(coefficient: Expression): Factors {
-  if (coefficient.kind === 'sum') {
-    const signs = coefficient.terms.map(splitSign);
-    if (signs.every((s) => s.negative)) return { ...NO_FACTORS, negative: true, numerator: [joinLogarithms(build.sum(...signs.map((s) => s.magnitude)))] };
-  }
-  const factors = factorsOf(coefficient);
-  return { ...factors, numerator: factors.numerator.map(orderedSum) };
+  const whole = factorsOf(coefficient);
+  return whole.numerator.reduce<Factors>((all, f) => multiplyFactors(all, f.kind === 'sum' ? sumFactors(f) : { ...NO_FACTORS, numerator: [f] }), { ...whole, numerator: [] });
+}
+
+function sumFactors(sum: Extract<Expression, { kind: 'sum' }>): Factors {
+  const common = commonFraction(sum.terms);
+  const inner = common ? common.sum : sum;
+  const signs = inner.kind === 'sum' ? inner.terms.map(splitSign) : [splitSign(inner)];
+  const negative = signs.every((s) => s.negative);
+  return { negative, coefficient: common?.factor ?? Q.ONE, numerator: [orderedSum(negative ? build.sum(...signs.map((s) => s.magnitude)) : inner)], denominator: [] };
 }
 
 /** A sum starts with a positive member where it has one. */

@@ -104,6 +104,8 @@ function rank(e: Expression): number {
       return base.name === 'i' ? 2.5 : 2;
     case 'symbol':
       return 3;
+    case 'product':
+      return e.kind === 'power' && base.factors.every((f) => f.kind === 'number' || f.kind === 'constant') ? 1 : 4;
     case 'sum':
       return 5;
     default:
@@ -228,6 +230,17 @@ function mergeRoots(list: readonly Expression[]): readonly Expression[] {
   const whole = build.squareRoot(build.product(...inside.sort((a, b) => rank(a) - rank(b))));
   const first = list.findIndex((f) => together.includes(f));
   return list.flatMap((f, i) => (i === first ? [whole] : together.includes(f) ? [] : [f]));
+}
+
+/** A sum with fractions as a rational factor times a sum without: `3 log 2/8 + 3/16` is 3/16 (2 log 2 + 1). Null where no member has a fraction. */
+export function commonFraction(terms: readonly Expression[]): { readonly factor: Rational; readonly sum: Expression } | null {
+  const parts = terms.map(factorsOf);
+  if (parts.some((p) => Q.isZero(p.coefficient))) return null;
+  const denominator = parts.reduce((l, p) => (l / Q.gcd(l, p.coefficient.den)) * p.coefficient.den, 1n);
+  if (denominator === 1n) return null;
+  const numerator = parts.reduce((g, p) => Q.gcd(g, (p.coefficient.num * denominator) / p.coefficient.den), 0n);
+  const factor = Q.rational(numerator, denominator);
+  return { factor, sum: build.sum(...parts.map((p) => arrange({ ...p, coefficient: Q.divide(p.coefficient, factor) }))) };
 }
 
 /** The sign that a writer puts in front, and what follows it. */

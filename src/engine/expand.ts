@@ -8,6 +8,7 @@ import { readAllAssumptions } from './assumptions.ts';
 import { withBounds } from './bounds.ts';
 import { expansionAnswer } from './expansionAnswer.ts';
 import { equationOf, functionOf, questionOf, readPoint, variableOf } from './question.ts';
+import { insertionAnswer } from './insertion.ts';
 import { readingAnswer } from './reading.ts';
 import type { EngineTools } from './resources.ts';
 import { type SourceFormula, sourceFormula } from './source.ts';
@@ -49,6 +50,8 @@ export async function askExpand(request: ExpandRequest, tools: EngineTools, time
   if (!expander.ok) return expander;
   const answer = expansionAnswer(expander.value.first);
   const reading = request.details?.includes('reading') ? { reading: readingAnswer(request, source.value, expander.value.first) } : {};
-  return withBounds({ ...answer, ...reading }, expander.value, request, time);
+  const place = { document: request.text, language: request.language, expression: request.text.slice(source.value.start, source.value.end) };
+  const insertion = request.details?.includes('insertion') ? { insertion: insertionAnswer(expander.value.first, place) } : {};
+  return withBounds({ ...answer, ...reading, ...insertion }, expander.value, request, time);
 }
 

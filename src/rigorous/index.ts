@@ -13,3 +13,6 @@ export { intervalArithmetic } from './interval-arithmetic.ts';
 export {
   complexBallTrees, type Describe, type EnclosableFunction, enclose, encloseInterval, encloseReal, encloseRectangle, evaluateTree, intervalTrees, isElementaryName, rationalOf, realBallTrees, type TreeArithmetic,
 } from './enclose.ts';
+/** Local models: truncated series with a proven remainder factor. */
+export { type Model, type ModelArithmetic, modelArithmetic } from './model.ts';
+export { type ModellableFunction, modelOfTree, type ModelTreeContext } from './model-tree.ts';

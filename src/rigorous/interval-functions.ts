@@ -296,7 +296,7 @@ export function tan(x: Interval): Interval | null {
 
 /** n-th root of a double >= 0: a start by any means, then ends that are checked by powers. */
 function rootAt(x: number, n: number): Interval {
-  if (x === 0) return ZERO;
+  if (x === 0 || x === 1) return { lo: x, hi: x };
   if (x === Infinity) return { lo: 1, hi: Infinity };
   const start = Math.pow(x, 1 / n);
   for (let slack = 2 ** -51; ; slack *= 4) {

@@ -98,22 +98,41 @@ export const width = (x: Interval): number => up(x.hi - x.lo);
 
 export const negate = (x: Interval): Interval => ({ lo: -x.hi, hi: -x.lo });
 
+/** The rounding error of x + y is exactly zero (Knuth's two-sum). */
+function exactSum(x: number, y: number, s: number): boolean {
+  const part = s - x;
+  return x - (s - part) + (y - part) === 0;
+}
+/** A sum of doubles that rounds to zero is zero. */
+const sumDown = (s: number): number => (s === 0 ? 0 : down(s));
+const sumUp = (s: number): number => (s === 0 ? 0 : up(s));
+
 export function add(a: Interval, b: Interval): Interval {
   if (a.lo === 0 && a.hi === 0) return b;
   if (b.lo === 0 && b.hi === 0) return a;
-  return { lo: down(a.lo + b.lo), hi: up(a.hi + b.hi) };
+  const lo = a.lo + b.lo;
+  if (a.lo === a.hi && b.lo === b.hi && exactSum(a.lo, b.lo, lo)) return { lo, hi: lo };
+  return { lo: sumDown(lo), hi: sumUp(a.hi + b.hi) };
 }
-export function subtract(a: Interval, b: Interval): Interval {
-  if (b.lo === 0 && b.hi === 0) return a;
-  if (a.lo === 0 && a.hi === 0) return negate(b);
-  return { lo: down(a.lo - b.hi), hi: up(a.hi - b.lo) };
-}
+export const subtract = (a: Interval, b: Interval): Interval => (b.lo === 0 && b.hi === 0 ? a : add(a, { lo: -b.hi, hi: -b.lo }));
+
+/** Products and quotients of small integers are exact: values at special points stay so. */
+const exactProduct = (x: number, y: number): boolean => Number.isInteger(x) && Number.isInteger(y) && Math.abs(x * y) <= Number.MAX_SAFE_INTEGER;
 
 /** Zero times infinity is zero here: an infinite end stands for arbitrarily large finite numbers. */
 const times = (a: number, b: number): number => (a === 0 || b === 0 ? 0 : a * b);
 
 export function multiply(a: Interval, b: Interval): Interval {
   if ((a.lo === 0 && a.hi === 0) || (b.lo === 0 && b.hi === 0)) return ZERO;
+  if (a.lo === a.hi) {
+    if (a.lo === 1) return b;
+    if (a.lo === -1) return { lo: -b.hi, hi: -b.lo };
+    if (b.lo === b.hi && exactProduct(a.lo, b.lo)) return { lo: a.lo * b.lo, hi: a.lo * b.lo };
+  }
+  if (b.lo === b.hi) {
+    if (b.lo === 1) return a;
+    if (b.lo === -1) return { lo: -a.hi, hi: -a.lo };
+  }
   if (a.lo >= 0) {
     if (b.lo >= 0) return { lo: Math.max(0, down(times(a.lo, b.lo))), hi: up(times(a.hi, b.hi)) };
     if (b.hi <= 0) return { lo: down(times(a.hi, b.lo)), hi: Math.min(0, up(times(a.lo, b.hi))) };
@@ -130,6 +149,7 @@ export function multiply(a: Interval, b: Interval): Interval {
 }
 
 export function square(x: Interval): Interval {
+  if (x.lo === x.hi && exactProduct(x.lo, x.lo)) return { lo: x.lo * x.lo, hi: x.lo * x.lo };
   const a = Math.abs(x.lo);
   const b = Math.abs(x.hi);
   const large = a > b ? a : b;
@@ -141,6 +161,11 @@ export function square(x: Interval): Interval {
 export function divide(a: Interval, b: Interval): Interval | null {
   if (b.lo <= 0 && b.hi >= 0) return null;
   if (a.lo === 0 && a.hi === 0) return ZERO;
+  if (b.lo === b.hi) {
+    if (b.lo === 1) return a;
+    const q = a.lo / b.lo;
+    if (a.lo === a.hi && exactProduct(q, b.lo) && q * b.lo === a.lo) return { lo: q, hi: q };
+  }
   if (b.hi < 0) return divide(negate(a), negate(b));
   // b > 0: each end of a by the end of b that makes it extreme.
   const over = (x: number, y: number): number => (y === Infinity ? 0 : x / y);
@@ -176,6 +201,8 @@ export const minimum = (a: Interval, b: Interval): Interval => ({ lo: Math.min(a
 /** Square root of the whole interval; null where part of it is negative. Math.sqrt is correctly rounded (IEEE 754). */
 export function sqrt(x: Interval): Interval | null {
   if (x.lo < 0) return null;
+  const r = Math.sqrt(x.lo);
+  if (x.lo === x.hi && exactProduct(r, r) && r * r === x.lo) return { lo: r, hi: r };
   return { lo: x.lo === 0 ? 0 : Math.max(0, down(Math.sqrt(x.lo))), hi: x.hi === 0 ? 0 : up(Math.sqrt(x.hi)) };
 }
 
@@ -189,6 +216,7 @@ export function powerInteger(x: Interval, n: number | bigint): Interval | null {
   }
   if (exponent === 1) return x;
   if (exponent === 2) return square(x);
+  if (x.lo === x.hi && Math.abs(x.lo) === 1) return exponent % 2 === 0 ? ONE : x;
   const even = exponent % 2 === 0;
   if (even) {
     const y = absolute(x);

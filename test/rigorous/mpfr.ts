@@ -32,7 +32,7 @@ export async function judge(bits: number): Promise<(name: UnaryName, x: Ball) =>
   const library = await init();
   return (name, x) => {
     const context = library.getContext({ precisionBits: bits, radix: 16 });
-    const value = context.Float(hexadecimal(real.midpoint(x)))[name]();
+    const value = context.Float(hexadecimal(real.midpoint(x)))[name]() as unknown as { isNumber(): boolean; toString(radix: number): string };
     const result = value.isNumber() ? fromHexadecimal(value.toString(16), bits) : null;
     context.destroy();
     return result;

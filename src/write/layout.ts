@@ -52,6 +52,10 @@ export function factorsOf(e: Expression): Factors {
 }
 
 function exponentialFactors(exponent: Expression): Factors | null {
+  if (exponent.kind === 'number' && exponent.value.num < 0n) {
+    const below = build.number(Q.negate(exponent.value));
+    return { ...NO_FACTORS, denominator: [build.isOneNumber(below) ? build.constant('e') : build.power(build.constant('e'), below)] };
+  }
   const split = splitExponential(exponent);
   if (!split) return null;
   const start: Factors = split.rest ? { ...NO_FACTORS, numerator: [build.power(build.constant('e'), split.rest)] } : NO_FACTORS;

@@ -35,6 +35,12 @@ describe('expansions in LaTeX', () => {
     ['a local variable with a fraction stays outside', expansionOf(sin, [[quotient(squareRoot(n(2)), n(2)), 0], [quotient(squareRoot(n(2)), n(2)), 1]], [2], about(quotient(constant('pi'), n(4)))), '\\frac{\\sqrt{2}}{2} + \\frac{\\sqrt{2}}{2} \\left(x - \\frac{\\pi}{4}\\right) + O\\left(\\left(x - \\frac{\\pi}{4}\\right)^2\\right)'],
     ['a local variable that is a sum stays together', expansionOf(sin, [[1, 0], [1, 1]], [2], about(n(1))), '1 + (x - 1) + O((x - 1)^2)'],
     ['logarithms in the remainder', expansionOf(sin, [[1, 1, 1]], [2, 2], atInfinity()), '\\frac{\\ln x}{x} + O\\left(\\frac{\\ln^2 x}{x^2}\\right)'],
+    // Stirling's prefactor as an engine finds it, and as it is printed (DLMF 5.11.3).
+    ['e^(x ln x - x)', { ...stirling, prefactor: product(squareRoot(n(2)), squareRoot(constant('pi')), squareRoot(quotient(n(1), x)), power(constant('e'), product(x, sum(call('log', x), n(-1))))), terms: stirling.terms.slice(0, 2) }, '\\frac{\\sqrt{2\\pi} x^x e^{-x}}{\\sqrt{x}} \\left(1 + \\frac{1}{12x} + O(x^{-4})\\right)'],
+    // Central binomial coefficients (common practice): 4^n / sqrt(pi n).
+    ['e^(2 n ln 2)', expansionOf(x, [[1, 0], [[-1, 8], 1]], [2], { ...atInfinity(symbol('n')), prefactor: quotient(power(constant('e'), product(n(2), symbol('n'), call('log', n(2)))), product(squareRoot(constant('pi')), squareRoot(symbol('n')))) }), '\\frac{4^n}{\\sqrt{\\pi n}} \\left(1 - \\frac{1}{8n} + O(n^{-2})\\right)'],
+    ['a coefficient with fractions inside', expansionOf(x, [[sum(quotient(product(n(3), call('log', n(2))), n(8)), n(3, 16)), 1]], [2]), '\\frac{3(2\\ln 2 + 1) x}{16} + O(x^2)'],
+    ['negative powers of e', expansionOf(x, [[power(constant('e'), -1), 1]], [2]), '\\frac{x}{e} + O(x^2)'],
     ['exact', expansionOf(quotient(n(1), x), [[1, -1]], null), '\\frac{1}{x}'],
   ])('%s', (_, expansion, latex) => {
     expect(expansionLatex(expansion)).toBe(latex);

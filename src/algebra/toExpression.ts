@@ -9,6 +9,7 @@ import { contentOf, divideByInteger, isOnePolynomial, kernelsIn, ONE_POLYNOMIAL,
 import { addElements, elementKey, invertElement, isQuotient, kernelsOf, multiplyElements, negateElement, normalise, partsOf, reduceByRelations, scaleElement, type Factor, type Quotient } from './quotient.ts';
 import { asElement } from './split.ts';
 import { squareFreeFactors } from './squareFree.ts';
+import { asSingleCosine } from './unitCircle.ts';
 import type { Element } from './types.ts';
 
 /** base^exponent, gathered before writing. */
@@ -71,6 +72,17 @@ function inCosines(ctx: Context, a: Quotient): Expression | null {
   if (kernels.length !== 1 || kernel === undefined || a.denominator.some((f) => kernelsIn(f.polynomial).has(kernel))) return null;
   const { shape } = ctx.table.kernels[kernel] as Kernel;
   if (shape.kind !== 'cosine') return null;
+  const written = (r: Rational, coefficient: Element): Expression => {
+    if (r.num === 0n) return toExpression(ctx, coefficient);
+    const sine = Q.compare(r, Q.rational(1, 4)) > 0;
+    const angle = sine ? Q.subtract(Q.HALF, r) : r;
+    const call = ctx.table.intern(`written ${sine ? 'sin' : 'cos'} ${Q.toText(angle)}`, () => ({
+      shape: { kind: 'call', id: sine ? 'sin' : 'cos', args: [scaleElement(kernelElement(ctx, constantKernel(ctx, 'pi')), angle)] },
+    }));
+    return toExpression(ctx, multiplyElements(ctx.table, coefficient, kernelElement(ctx, call)));
+  };
+  const single = asSingleCosine(ctx, ctx.table.kernels[kernel] as Kernel, a);
+  if (single) return written(single.angle, single.factor);
   const byAngle = new Map<string, { angle: Rational; coefficient: Element }>();
   const put = (k: number, coefficient: Element): void => {
     // cos(pi r), r brought into [0, 1/2].
@@ -99,17 +111,7 @@ function inCosines(ctx: Context, a: Quotient): Expression | null {
     }
   }
   const terms = [...byAngle.values()].filter((x) => isQuotient(x.coefficient) || x.coefficient.num !== 0n).sort((x, y) => Q.compare(x.angle, y.angle));
-  return build.sum(
-    ...terms.map(({ angle, coefficient }) => {
-      if (angle.num === 0n) return toExpression(ctx, coefficient);
-      const sine = Q.compare(angle, Q.rational(1, 4)) > 0;
-      const r = sine ? Q.subtract(Q.HALF, angle) : angle;
-      const call = ctx.table.intern(`written ${sine ? 'sin' : 'cos'} ${Q.toText(r)}`, () => ({
-        shape: { kind: 'call', id: sine ? 'sin' : 'cos', args: [scaleElement(kernelElement(ctx, constantKernel(ctx, 'pi')), r)] },
-      }));
-      return toExpression(ctx, multiplyElements(ctx.table, coefficient, kernelElement(ctx, call)));
-    }),
-  );
+  return build.sum(...terms.map((x) => written(x.angle, x.coefficient)));
 }
 
 const numberExpression = (r: Rational): Expression => (r.num < 0n ? build.negation(build.number(Q.negate(r))) : build.number(r));

@@ -4,7 +4,7 @@ import { kernelElement, type Context } from './context.ts';
 import type { Kernel } from './kernel.ts';
 import { monomialOf, UNIT } from './monomial.ts';
 import type { Polynomial, Term } from './polynomial.ts';
-import { addElements, multiplyElements, negateElement, scaleElement } from './quotient.ts';
+import { addElements, elementKey, multiplyElements, negateElement, scaleElement } from './quotient.ts';
 import { dependentSquareRoot } from './denest.ts';
 import { positiveRationalPower, radicandPower } from './radicals.ts';
 import { rationalMultiple } from './split.ts';
@@ -78,6 +78,28 @@ function chebyshev(ctx: Context, q: Rational): Element {
   let value: Element = c;
   for (let i = 1n; i < k; i += 1n) [before, value] = [value, plus(ctx, multiplyElements(ctx.table, c, value), negateElement(before))];
   return value;
+}
+
+const writtenForms = new WeakMap<Kernel, ReadonlyMap<string, { readonly angle: Rational; readonly scale: Rational }>>();
+
+/** The r in (0, 1/2) and c with a = c cos(pi r), where a is a polynomial in the given cosine kernel and of that form; else null. */
+export function asSingleCosine(ctx: Context, kernel: Kernel, a: Element): { readonly angle: Rational; readonly factor: Rational } | null {
+  if (kernel.shape.kind !== 'cosine') return null;
+  let forms = writtenForms.get(kernel);
+  if (!forms) {
+    const found = new Map<string, { readonly angle: Rational; readonly scale: Rational }>();
+    const m = Number(kernel.shape.angle.den) * (kernel.shape.angle.num === 1n ? 2 : 1);
+    for (let k = 1; 4 * k < m; k += 1) {
+      const angle = Q.rational(2 * k, m);
+      const { coefficient, unit } = rationalMultiple(cosineOfPi(ctx, angle));
+      found.set(elementKey(unit), { angle, scale: coefficient });
+    }
+    forms = found;
+    writtenForms.set(kernel, forms);
+  }
+  const { coefficient, unit } = rationalMultiple(a);
+  const form = forms.get(elementKey(unit));
+  return form ? { angle: form.angle, factor: Q.divide(coefficient, form.scale) } : null;
 }
 
 function cosineKernel(ctx: Context, m: number): Kernel | null {

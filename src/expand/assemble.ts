@@ -43,8 +43,13 @@ function localTrees(problem: ExpansionProblem, direction: Direction | 'both'): {
   if (direction === '-inf') return { local: build.quotient(one, x), logarithm: build.call('log', build.negation(x)) };
   const a = problem.point as Expression;
   const atZero = a.kind === 'number' && Q.isZero(a.value);
-  const local = direction === 'left' ? (atZero ? build.negation(x) : build.difference(a, x)) : atZero ? x : build.difference(x, a);
+  const local = direction === 'left' ? (atZero ? build.negation(x) : build.difference(a, x)) : atZero ? x : build.sum(x, opposite(a));
   return { local, logarithm: build.call('log', direction === 'both' ? build.call('abs', local) : local) };
+}
+
+function opposite(e: Expression): Expression {
+  if (e.kind === 'negation') return e.operand;
+  return e.kind === 'number' && e.value.num < 0n ? build.number(Q.negate(e.value)) : build.negation(e);
 }
 
 interface Shapes {

@@ -2,7 +2,7 @@
 import { build, children, type Expression, Q } from '../expression/index.ts';
 import { Declined } from '../outcome.ts';
 import {
-  add, divide, eventualSign, exactOf, exponential, finiteStream, generalPower, isLiteralOne, isLiteralZero, isRational, monomialOf, multiply, negate, type Multi, power,
+  add, divide, eventualSign, exactOf, exponential, generalPower, isLiteralOne, isLiteralZero, isRational, monomialOf, multiply, negate, type Multi, orderSeries, power,
   Series, theta,
 } from '../series/index.ts';
 import { evaluateCall } from './calls.ts';
@@ -118,13 +118,7 @@ function orderTerm(s: Session, argument: Expression, little: boolean): Multi {
   if (isLiteralZero(size)) return Q.ZERO;
   const lead = monomialOf(c, size);
   if (!lead) return Q.ZERO;
-  const element = size instanceof Series ? size.element : c.scale.local;
-  const [first, ...slower] = lead.factors;
-  const inFast = first && first.element === element ? first.exponent : Q.ZERO;
-  const rest = first && first.element === element ? slower : lead.factors;
-  let coefficient: Multi = Q.ONE;
-  for (const f of rest) coefficient = multiply(c, coefficient, new Series(f.element, finiteStream([{ exponent: f.exponent, coefficient: Q.ONE }]), () => build.power(f.element.expression, exactOf(c, f.exponent))));
-  return new Series(element, finiteStream([{ exponent: inFast, coefficient, order: true }]), () => ({ kind: 'order', little: false, argument: exactOf(c, size) }));
+  return orderSeries(c, lead, () => ({ kind: 'order', little: false, argument: exactOf(c, size) }));
 }
 
 /** A derivative in a symbol that varies with t: df/dv = theta(f)/theta(v). In another symbol it is a derivative in a parameter. */

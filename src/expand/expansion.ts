@@ -60,3 +60,13 @@ export interface ExpansionProblem {
   readonly order?: Rational;
   readonly assumptions: readonly Assumption[];
 }
+
+/** Expand the root of an equation (a relation with one equals sign, or an expression set to zero) in the symbol `unknown`. */
+export interface RootProblem extends Omit<ExpansionProblem, 'function'> {
+  readonly equation: Expression;
+  readonly unknown: Expression;
+  /** The value that the wanted root tends to. */
+  readonly near?: Expression | 'inf' | '-inf';
+  /** Also branches that are not real. */
+  readonly complex?: boolean;
+}

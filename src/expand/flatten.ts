@@ -2,7 +2,7 @@
 import type { Element } from '../algebra/types.ts';
 import { build, type Expression, Q } from '../expression/index.ts';
 import { Declined } from '../outcome.ts';
-import { addElements, type Context, exactOf, isOscillating, isRational, isZero, type Multi, negateElement, nextTerm, type ScaleElement, Series } from '../series/index.ts';
+import { addElements, type Context, exactOf, isOscillating, isRational, isZero, type Multi, negateElement, nextTerm, nextTermOrOrder, type ScaleElement, Series } from '../series/index.ts';
 
 /** One monomial: coefficient * t^power * L^log * product of element^exponent * oscillation. With `order` only its size is known. */
 export interface RawTerm {
@@ -24,30 +24,21 @@ export function* rawTerms(c: Context, m: Multi, outer: readonly Factor[] = []): 
     return;
   }
   for (let k = 0; ; k += 1) {
-    const here = m.stream.at(k);
-    if (!here) return;
-    if (here.order) {
-      yield { ...shapeOf(c, [...outer, { element: m.element, exponent: here.exponent }], here.coefficient), order: true };
-      return;
-    }
-    const lead = nextTermBeforeOrder(c, m, k);
-    if (lead === 'order') continue;
+    const lead = nextTermOrOrder(c, m, k);
     if (!lead) return;
     k = lead.index;
+    const factors = [...outer, { element: m.element, exponent: lead.exponent }];
+    if (lead.order) {
+      yield { ...shapeOf(c, factors, lead.coefficient), order: true };
+      return;
+    }
     let truncated = false;
-    for (const term of rawTerms(c, lead.coefficient, [...outer, { element: m.element, exponent: lead.exponent }])) {
+    for (const term of rawTerms(c, lead.coefficient, factors)) {
       truncated ||= term.order;
       yield term;
     }
     if (truncated) return;
   }
-}
-
-/** The next non-zero term; 'order' where the term at k is zero and an O-term may follow before any non-zero one. */
-function nextTermBeforeOrder(c: Context, m: Series, k: number): ReturnType<typeof nextTerm> | 'order' {
-  const here = m.stream.at(k);
-  if (here && isZero(c, here.coefficient) && m.stream.at(k + 1)?.order) return 'order';
-  return nextTerm(c, m, k);
 }
 
 function* constantTerms(c: Context, e: Element, outer: readonly Factor[]): Generator<RawTerm> {

@@ -1,14 +1,14 @@
 /** One side of a point: the function as a multiseries in t -> 0+, and its first terms. */
 import { createField } from '../algebra/index.ts';
 import type { Field } from '../algebra/types.ts';
-import { type Assumption, build, type Expression, freeSymbols, Q, type Rational, substitute } from '../expression/index.ts';
+import { type Assumption, build, type Expression, Q, type Rational, substitute } from '../expression/index.ts';
 import { describe } from '../functions/index.ts';
 import { type Budget, Declined } from '../outcome.ts';
 import { compareExponents, type Context, createScale, finiteStream, type Multi, Series } from '../series/index.ts';
 import { evaluate } from './evaluate.ts';
 import type { ExpansionProblem } from './expansion.ts';
 import { type RawTerm, rawTerms } from './flatten.ts';
-import { openSession } from './session.ts';
+import { openSession, type Session } from './session.ts';
 
 export interface SideResult {
   readonly context: Context;
@@ -32,7 +32,7 @@ interface Chart {
   readonly infinite: boolean;
 }
 
-function chartOf(problem: ExpansionProblem, direction: Direction): Chart {
+function chartOf(problem: Pick<ExpansionProblem, 'variable' | 'point'>, direction: Direction): Chart {
   const { variable, point } = problem;
   const name = variable.kind === 'symbol' ? variable.name : null;
   const infinite = direction === 'inf' || direction === '-inf';
@@ -48,12 +48,23 @@ function chartOf(problem: ExpansionProblem, direction: Direction): Chart {
     : { symbol, variable: build.difference(a, w), inverse: build.difference(a, variable), infinite };
 }
 
-/** A quantity like v/c as one symbol: the tree rewritten in a symbol. Only symbols are accepted here; compound variables are replaced before. */
-export function expandSide(problem: ExpansionProblem, direction: Direction, budget: Budget): SideResult {
+export interface OpenSide {
+  readonly context: Context;
+  /** The variable bound to its series. */
+  readonly session: Session;
+  /** A tree in the variable, rewritten in the context's symbol. */
+  readonly fromVariable: (e: Expression) => Expression;
+  readonly toVariable: (e: Expression) => Expression;
+}
+
+/** A context for one side of a point: field, scale of powers of t, and the variable as a series. The variable must be one symbol; compound variables are replaced before. */
+export function openSide(problem: Pick<ExpansionProblem, 'variable' | 'point' | 'assumptions'>, direction: Direction, budget: Budget): OpenSide {
+  const name = problem.variable.kind === 'symbol' ? problem.variable.name : null;
+  if (name === null) throw new Declined('bad-request', 'The variable must be one symbol here.');
   const chart = chartOf(problem, direction);
-  const positive: Assumption = { kind: 'relation', left: build.symbol(chart.symbol), relation: '>', right: build.number(0) };
-  const field: Field = createField([...problem.assumptions, positive], budget, describe);
   const w = build.symbol(chart.symbol);
+  const positive: Assumption = { kind: 'relation', left: w, relation: '>', right: build.number(0) };
+  const field: Field = createField([...problem.assumptions, positive], budget, describe);
   const local = chart.infinite ? build.quotient(build.number(1), w) : w;
   const largeLogarithm = chart.infinite ? build.call('log', w) : build.negation(build.call('log', w));
   const context: Context = {
@@ -63,27 +74,29 @@ export function expandSide(problem: ExpansionProblem, direction: Direction, budg
     local: chart.symbol,
     oscillation: chart.infinite,
     notes: { sided: false, divergent: false, subdominantDropped: false, assumptions: new Set() },
+    patience: { value: 16 },
   };
   const exponent = chart.infinite ? Q.MINUS_ONE : Q.ONE;
   const base = new Series(context.scale.local, finiteStream([{ exponent, coefficient: Q.ONE }]), () => w);
-  const name = problem.variable.kind === 'symbol' ? problem.variable.name : null;
-  if (name === null) throw new Declined('bad-request', 'The variable must be one symbol here.');
-  const tree = chart.symbol === name ? problem.function : substitute(problem.function, name, chart.variable);
-  if (!freeSymbols(problem.function).includes(name)) return constantSide(context, tree);
-  const series = evaluate(openSession(context, new Map([[chart.symbol, base]])), tree);
-  const toVariable = chart.symbol === name ? (e: Expression): Expression => e : (e: Expression): Expression => substitute(e, chart.symbol, chart.inverse);
-  return { context, series, ...takeTerms(context, series, problem.terms, problem.order), toVariable };
+  const same = chart.symbol === name;
+  return {
+    context,
+    session: openSession(context, new Map([[chart.symbol, base]])),
+    fromVariable: same ? (e) => e : (e) => substitute(e, name, chart.variable),
+    toVariable: same ? (e) => e : (e) => substitute(e, chart.symbol, chart.inverse),
+  };
 }
 
-function constantSide(context: Context, tree: Expression): SideResult {
-  const series = context.field.fromExpression(tree);
-  return { context, series, ...takeTerms(context, series, 1, undefined), toVariable: (e) => e };
+export function expandSide(problem: ExpansionProblem, direction: Direction, budget: Budget): SideResult {
+  const { context, session, fromVariable, toVariable } = openSide(problem, direction, budget);
+  const series = evaluate(session, fromVariable(problem.function));
+  return { context, series, ...takeTerms(context, series, problem.terms, problem.order), toVariable };
 }
 
 /** Terms above t^order that are waited for before the request is refused as asking for infinitely many. */
 const MOST_ABOVE_ORDER = 400;
 
-function takeTerms(c: Context, series: Multi, count: number | undefined, order: Rational | undefined): { terms: RawTerm[]; remainder: RawTerm | null } {
+export function takeTerms(c: Context, series: Multi, count: number | undefined, order: Rational | undefined): { terms: RawTerm[]; remainder: RawTerm | null } {
   const terms: RawTerm[] = [];
   let leadFactors: RawTerm | null = null;
   for (const term of rawTerms(c, series)) {

@@ -5,6 +5,7 @@ import { Declined } from '../outcome.ts';
 import { signOfExponent } from './exponent.ts';
 import { decideSign, isZero, leading, monomialOf } from './leading.ts';
 import { addElements, type Context, exactOf, isRational, type Lead, type Multi, multiplyElements, negateElement, Series, type Stream, unnamed } from './multi.ts';
+import { plainText } from './plain.ts';
 import { add, monomial, multiply, negate, scaleBy, shift, subtract } from './ring.ts';
 import { comparable, insertExponential, logarithmOf } from './scale.ts';
 import { split } from './split.ts';
@@ -32,8 +33,17 @@ function relativeRest(c: Context, f: Series, lead: Lead): Stream {
 
 function leadOf(c: Context, f: Series): Lead {
   const lead = leading(c, f);
+  if (lead) relyOnNonZero(c, lead.coefficient);
   if (!lead) throw new Declined('no-expansion', 'A divisor or the argument of a logarithm is identically zero; correct the formula.');
   return lead;
+}
+
+/** A leading coefficient in parameters is not zero for generic values only: the result says so. */
+function relyOnNonZero(c: Context, coefficient: Multi): void {
+  if (coefficient instanceof Series || isRational(coefficient) || c.field.parameters(coefficient).length === 0) return;
+  const sign = c.field.sign(coefficient);
+  if (sign !== 'undecided' && sign !== 'complex') return;
+  if (!isOscillating(c, coefficient)) c.field.require(`${plainText(c.field.toExpression(coefficient))} != 0`);
 }
 
 /** 1/f. */
@@ -97,6 +107,7 @@ export function power(c: Context, f: Multi, exponent: Element): Multi {
     if (decideSign(c, exponent) === 1) return Q.ZERO;
     throw new Declined('no-expansion', 'The formula raises zero to a power that is not positive; correct the formula.');
   }
+  relyOnNonZero(c, lead.coefficient);
   const rest = relativeRest(c, f, lead);
   const exponentOfElement = multiplyElements(c, lead.exponent, exponent);
   if (n === null && signOfExponent(c, lead.exponent) !== 0) c.notes.sided = true;

@@ -7,8 +7,7 @@ import { type Context, exactOf, isRational, type Lead, type Multi, type ScaleEle
 import { plainText } from './plain.ts';
 import { vanishes } from './vanish.ts';
 
-/** Vanishing candidates before the function itself is tested for zero, and before the search gives up (zero test undecided; decided as non-zero). */
-const PATIENCE = 16;
+/** Vanishing candidates before the search gives up (zero test undecided; decided as non-zero). */
 const CAP_UNDECIDED = 120;
 const CAP = 3000;
 
@@ -21,14 +20,32 @@ export function leading(c: Context, s: Series): Lead | null {
 
 /** The first non-zero term at or after index; null where the rest is zero. */
 export function nextTerm(c: Context, s: Series, from: number): Lead | null {
+  const found = nextTermOrOrder(c, s, from);
+  if (found && (found.order || hidesLead(c, found.coefficient))) {
+    throw new Declined('no-expansion', 'The O-term in the formula hides the leading term that is needed here; write more terms before it.');
+  }
+  return found;
+}
+
+/** Whether a coefficient is known only as an O-term. */
+function hidesLead(c: Context, m: Multi): boolean {
+  if (!(m instanceof Series)) return false;
+  const first = nextTermOrOrder(c, m, 0);
+  return first !== null && (first.order || hidesLead(c, first.coefficient));
+}
+
+/** Zero for certain; an O-term counts as present. */
+const isAbsent = (c: Context, m: Multi): boolean => (m instanceof Series ? nextTermOrOrder(c, m, 0) === null : isZero(c, m));
+
+/** The first term at or after index that is not zero or is an O-term (`order`); null where the rest is zero. */
+export function nextTermOrOrder(c: Context, s: Series, from: number): (Lead & { readonly order: boolean }) | null {
   let verdict: Truth | null = null;
   for (let k = from; ; k += 1) {
     const term = s.stream.at(k);
     if (!term) return null;
-    if (term.order) throw new Declined('no-expansion', 'The O-term in the formula hides the leading term that is needed here; write more terms before it.');
-    if (!isZero(c, term.coefficient)) return { index: k, exponent: term.exponent, coefficient: term.coefficient };
+    if (term.order || !isAbsent(c, term.coefficient)) return { index: k, exponent: term.exponent, coefficient: term.coefficient, order: term.order === true };
     const seen = k - from;
-    if (seen === PATIENCE) {
+    if (seen === c.patience.value) {
       verdict = restVanishes(c, s, from);
       if (verdict === 'yes') return null;
     }

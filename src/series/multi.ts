@@ -58,7 +58,8 @@ export class Stream {
 export interface ScaleElement {
   /** Speed: a larger rank tends to zero faster than every power of a smaller one. Changes when elements are inserted between. */
   rank: number;
-  readonly kind: 'local' | 'logarithm' | 'exponential';
+  /** A formal element stands for an independent quantity smaller than everything else: coefficients of its powers are derivatives. */
+  readonly kind: 'local' | 'logarithm' | 'exponential' | 'formal';
   /** For a logarithm: 1 for 1/log(1/t), 2 for 1/log(log(1/t)), ...; else 0. */
   readonly depth: number;
   /** As a tree in t. */
@@ -97,6 +98,8 @@ export interface Context {
   readonly oscillation: boolean;
   /** What was met on the way. */
   readonly notes: Notes;
+  /** Vanishing terms that are passed before the function is tested for zero as a whole: raised where cancellation is expected. */
+  readonly patience: { value: number };
 }
 
 export interface Notes {

@@ -1,5 +1,6 @@
 /** The asymptotic scale: positive functions that tend to zero, ordered by speed, none comparable with a power of another. */
 import { build, type Expression, Q } from '../expression/index.ts';
+import { Declined } from '../outcome.ts';
 import { compareMonomials, type Monomial, monomialOf } from './leading.ts';
 import { type Context, exactOf, type Multi, type Scale, type ScaleElement } from './multi.ts';
 import { monomial, negate } from './ring.ts';
@@ -20,6 +21,7 @@ function insert(scale: Scale, element: ScaleElement, position: number): void {
 /** log of a scale element. For the slowest one this adds 1/log(1/element) to the scale. */
 export function logarithmOf(c: Context, element: ScaleElement): Multi {
   if (element.logarithm) return element.logarithm;
+  if (element.kind === 'formal') throw new Declined('no-expansion', 'A function is singular at the value that is being sought; name another value.');
   const depth = element.depth + 1;
   const slower: ScaleElement = {
     rank: 0,
@@ -40,6 +42,7 @@ const reciprocalOf = (e: Expression): Expression => (e.kind === 'power' ? e.base
 export function comparable(c: Context, large: Monomial): { readonly element: ScaleElement; readonly logarithm: Monomial } | { readonly position: number } {
   for (let k = c.scale.elements.length - 1; k >= 0; k -= 1) {
     const element = c.scale.elements[k] as ScaleElement;
+    if (element.kind === 'formal') continue;
     const logarithm = element.logarithm && monomialOf(c, element.logarithm);
     if (!logarithm) return { position: k + 1 };
     const order = compareMonomials(c, large, logarithm);
@@ -47,6 +50,13 @@ export function comparable(c: Context, large: Monomial): { readonly element: Sca
     if (order > 0) return { position: k + 1 };
   }
   return { position: 0 };
+}
+
+/** Adds a formal element above all others. */
+export function insertFormal(c: Context, name: string): ScaleElement {
+  const element: ScaleElement = { rank: 0, kind: 'formal', depth: 0, expression: build.symbol(name), logarithm: null };
+  insert(c.scale, element, c.scale.elements.length);
+  return element;
 }
 
 /** Adds exp(-size) for a positive `size` that grows without bound. */

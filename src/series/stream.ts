@@ -1,8 +1,8 @@
 /** Lazily found terms in strictly increasing exponents (of one scale element), and the arithmetic of such streams. */
 import type { Element } from '../algebra/types.ts';
-import { Q } from '../expression/index.ts';
+import { Q, type Rational } from '../expression/index.ts';
 import { compareExponents } from './exponent.ts';
-import { addElements, type Context, isLiteralZero, type Multi, Stream, type Term } from './multi.ts';
+import { addElements, type Context, isLiteralZero, isRational, type Multi, Series, Stream, type Term } from './multi.ts';
 
 
 export const finiteStream = (terms: readonly Term[]): Stream => new Stream((k) => terms[k] ?? null);
@@ -53,6 +53,32 @@ export function sumStream(c: Context, ring: CoefficientRing, a: Stream, b: Strea
   });
 }
 
+/** The numerators of a stream's rational coefficients over one common denominator, which grows as terms are read; null from the first coefficient that is not rational. */
+class CommonDenominator {
+  private readonly numerators: bigint[] = [];
+  denominator = 1n;
+  private plain = true;
+  constructor(private readonly stream: Stream) {}
+
+  at(index: number): bigint | null {
+    while (this.plain && this.numerators.length <= index) {
+      const term = this.stream.at(this.numerators.length);
+      const value = term?.coefficient;
+      if (!term || term.order || value === undefined || value instanceof Series || !isRational(value)) {
+        this.plain = false;
+        break;
+      }
+      const factor = value.den / Q.gcd(this.denominator, value.den);
+      if (factor !== 1n) {
+        this.denominator *= factor;
+        for (let k = 0; k < this.numerators.length; k += 1) this.numerators[k] = (this.numerators[k] as bigint) * factor;
+      }
+      this.numerators.push(value.num * (this.denominator / value.den));
+    }
+    return this.plain ? (this.numerators[index] as bigint) : null;
+  }
+}
+
 interface Row {
   readonly index: number;
   column: number;
@@ -66,6 +92,8 @@ interface Row {
  */
 export function productStream(c: Context, ring: CoefficientRing, a: Stream, b: Stream, weight?: (p: Element, q: Element) => Element): Stream {
   const rows: Row[] = [];
+  const left = new CommonDenominator(a);
+  const right = new CommonDenominator(b);
   let opened = 0;
   let used: Row[] = [];
   return new Stream((k) => {
@@ -103,6 +131,10 @@ export function productStream(c: Context, ring: CoefficientRing, a: Stream, b: S
       } else if (sign === 0) used.push(row);
     }
     if (least === null) return null;
+    if (used.length > 1) {
+      const sum = rationalSum(a, b, used, left, right, weight);
+      if (sum) return { exponent: least, coefficient: sum };
+    }
     let order = false;
     let total: Multi = Q.ZERO;
     for (const row of used) {
@@ -118,4 +150,27 @@ export function productStream(c: Context, ring: CoefficientRing, a: Stream, b: S
     }
     return order ? { exponent: least, coefficient: total, order: true } : { exponent: least, coefficient: total };
   });
+}
+
+/** The sum of products of one term where all coefficients are rational: integers over one denominator, reduced once. Null where they are not. */
+function rationalSum(a: Stream, b: Stream, used: readonly Row[], left: CommonDenominator, right: CommonDenominator, weight?: (p: Element, q: Element) => Element): Rational | null {
+  let last = 0;
+  for (const row of used) last = Math.max(last, row.index);
+  if (left.at(last) === null) return null;
+  last = 0;
+  for (const row of used) last = Math.max(last, row.column);
+  if (right.at(last) === null) return null;
+  let total = 0n;
+  for (const row of used) {
+    const x = left.at(row.index);
+    const y = right.at(row.column);
+    if (x === null || y === null) return null;
+    if (x === 0n || y === 0n) continue;
+    if (weight) {
+      const w = weight((a.at(row.index) as Term).exponent, (b.at(row.column) as Term).exponent);
+      if (!isRational(w) || w.den !== 1n) return null;
+      total += x * y * w.num;
+    } else total += x * y;
+  }
+  return Q.rational(total, left.denominator * right.denominator);
 }

@@ -1,0 +1,120 @@
+/** Where the roots start: their leading terms, each simple enough for Newton's iteration to go on. */
+import type { Element } from '../../algebra/types.ts';
+import { build, type Expression, Q } from '../../expression/index.ts';
+import { Declined } from '../../outcome.ts';
+import { add, compareMonomials, growth, isZero, type Monomial, monomialOf, monomialSeries, type Multi, multiplyMonomials, scaleBy, Series, unitMonomial } from '../../series/index.ts';
+import { evaluate } from '../evaluate.ts';
+import { infiniteStarts } from './infinite.ts';
+import { polygonEdges } from './polygon.ts';
+import { type Curve, separate, taylorAt } from './taylor.ts';
+import { zerosOf } from './zeros.ts';
+
+export interface Start {
+  readonly value: Multi;
+  readonly multiplicity: number;
+  /** The value solves the equation as it stands. */
+  readonly exact: boolean;
+  /** An equivalent equation in which Newton's iteration improves the start. */
+  readonly tree?: Expression;
+}
+
+const MOST_DEGREE = 24;
+const DEEPEST = 8;
+
+/** The starts of all branches that can be found; real ones only unless `complex`. `near`: a finite limit, or a sign for plus or minus infinity. */
+export function startsOf(curve: Curve, near: Element | 1 | -1 | null, complex: boolean): Start[] {
+  const c = curve.side.context;
+  if (near === 1 || near === -1) {
+    const whole = tryTaylor(curve, Q.ZERO);
+    const found = whole?.complete ? explore(curve, Q.ZERO, whole.coefficients, null, complex, 0).filter((s) => growth(c, s.value) === 'large') : infiniteStarts(curve);
+    return found.filter((s) => isLargeWithSign(curve, s.value, near));
+  }
+  if (near !== null) return atLimit(curve, near, complex);
+  const atZero = tryTaylor(curve, Q.ZERO);
+  if (atZero?.complete) return explore(curve, Q.ZERO, atZero.coefficients, null, complex, 0);
+  const limits = finiteLimits(curve);
+  const finite = limits.flatMap((y) => atLimit(curve, y, complex));
+  return [...finite, ...infiniteStarts(curve)];
+}
+
+function isLargeWithSign(curve: Curve, value: Multi, sign: 1 | -1): boolean {
+  const lead = monomialOf(curve.side.context, value);
+  return lead !== null && growth(curve.side.context, value) === 'large' && curve.side.context.field.sign(lead.constant) === sign;
+}
+
+function tryTaylor(curve: Curve, base: Multi): ReturnType<typeof taylorAt> | null {
+  try {
+    return taylorAt(curve, base, MOST_DEGREE);
+  } catch (error) {
+    if (error instanceof Declined && error.failure.code === 'no-expansion') return null;
+    throw error;
+  }
+}
+
+/** Branches that tend to the finite value. At a pole of A in A(y) = B(t) the equation 1/A = 1/B is used. */
+function atLimit(curve: Curve, limit: Element, complex: boolean, reciprocal = false): Start[] {
+  const c = curve.side.context;
+  const taylor = tryTaylor(curve, limit);
+  if (!taylor) {
+    const parts = reciprocal ? null : separate(curve);
+    if (!parts) return [];
+    const tree = build.difference(build.power(parts.left, -1), build.power(parts.right, -1));
+    return atLimit({ ...curve, tree }, limit, complex, true).map((s) => ({ ...s, tree }));
+  }
+  const { coefficients } = taylor;
+  const degree = coefficients.findIndex((a) => dominates(curve, a, coefficients));
+  if (degree < 0) throw new Declined('no-expansion', 'The equation is too degenerate at this value of the unknown; name another value.');
+  if (degree === 0) return [];
+  return explore(curve, limit, coefficients.slice(0, degree + 1), unitMonomial, complex, 0).filter((s) => growth(c, add(c, s.value, scaleBy(c, limit, Q.MINUS_ONE))) !== 'finite');
+}
+
+/** Whether the coefficient is at least as large as all others. */
+function dominates(curve: Curve, a: Multi, all: readonly Multi[]): boolean {
+  const c = curve.side.context;
+  const lead = monomialOf(c, a);
+  if (!lead) return false;
+  return all.every((b) => {
+    const other = monomialOf(c, b);
+    return !other || compareMonomials(c, other, lead) <= 0;
+  });
+}
+
+/** Follows Newton's polygon from base + smaller, splitting multiple leading coefficients further. */
+function explore(curve: Curve, base: Multi, coefficients: readonly Multi[], bound: Monomial | null, complex: boolean, depth: number): Start[] {
+  const c = curve.side.context;
+  c.budget.check();
+  if (depth > DEEPEST) throw new Declined('undecided', 'Two roots agree in so many terms that they could not be told apart; factor the equation.');
+  const first = coefficients.findIndex((a) => !vanishes(curve, a));
+  if (first < 0) throw new Declined('bad-request', 'The equation holds for every value of the unknown; correct it.');
+  const starts: Start[] = first > 0 ? [{ value: base, multiplicity: first, exact: true }] : [];
+  for (const edge of polygonEdges(c, coefficients.slice(first), bound)) {
+    for (const zero of zerosOf(c, edge.polynomial, complex)) {
+      if (!zero.real && !complex) continue;
+      const value = add(c, base, monomialSeries(c, multiplyMonomials(c, edge.size, { constant: zero.value, factors: [] })));
+      if (zero.multiplicity === 1) starts.push({ value, multiplicity: 1, exact: false });
+      else {
+        const next = taylorAt(curve, value, MOST_DEGREE);
+        starts.push(...explore(curve, value, next.coefficients.slice(0, zero.multiplicity + 1), edge.size, complex, depth + 1));
+      }
+    }
+  }
+  return starts;
+}
+
+const vanishes = (curve: Curve, a: Multi): boolean => (a instanceof Series ? monomialOf(curve.side.context, a) === null : isZero(curve.side.context, a));
+
+/** Finite values that roots can tend to: zeros of the leading coefficient of F at fixed y, where that is a polynomial; else 0 alone, if it is one. */
+function finiteLimits(curve: Curve): Element[] {
+  const { context: c, session } = curve.side;
+  const f = evaluate(session, curve.tree);
+  const lead = monomialOf(c, f);
+  if (!lead) throw new Declined('bad-request', 'The equation holds for every value of the unknown; correct it.');
+  if (!c.field.parameters(lead.constant).includes(curve.unknown)) return [];
+  const limit = c.field.toExpression(lead.constant);
+  const inner = tryTaylor({ ...curve, tree: limit }, Q.ZERO);
+  if (!inner) return [];
+  const constants = inner.coefficients.map((a) => (a instanceof Series ? Q.ZERO : a));
+  const zero: Element[] = constants[0] !== undefined && isZero(c, constants[0]) ? [Q.ZERO] : [];
+  if (!inner.complete) return zero;
+  return [...zero, ...zerosOf(c, constants, false).filter((z) => z.real).map((z) => z.value)];
+}

@@ -5,3 +5,6 @@ export { CODE_LANGUAGES, codeLanguage, type CodeLanguage, type CommentStyle, typ
 export type { NearbyConstant } from './scope.ts';
 export type { Remark } from './environment.ts';
 export type { FormatEvidence } from './types.ts';
+export { type CommentText, documentOffset, type Piece } from './comments.ts';
+export type { PolynomialCode, SeriesBranch } from './series-code.ts';
+export type { Coefficients } from './polynomial.ts';

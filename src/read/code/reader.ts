@@ -4,11 +4,14 @@ import { attempt, failure, type Outcome, success } from '../../outcome.ts';
 import { parseFragment, parseProgram } from './document.ts';
 import type { Environment, Meaning, Remark } from './environment.ts';
 import { type GrammarHost, GrammarStore } from './grammar/loader.ts';
+import { commentTexts, type CommentText } from './comments.ts';
+import { execute, functionValue } from './execute.ts';
+import { type PolynomialCode, polynomialCode, type SeriesBranch, seriesBranches } from './series-code.ts';
 import { type CodeLanguage, codeLanguage, type CommentStyle, type FloatFormat } from './languages/index.ts';
 import { expressionAtCursor, nodeExactly, valueOf } from './locate.ts';
 import { readMeaning } from './meaning.ts';
 import { constantsOf, environmentAt, type NearbyConstant, type Scope, scopeAt } from './scope.ts';
-import { type Code, pathTo, type Program } from './syntax.ts';
+import { type Code, partsOf, pathTo, type Program, walkWithin } from './syntax.ts';
 import type { FormatEvidence, ValueType } from './types.ts';
 
 export interface FoundFormat {
@@ -116,9 +119,29 @@ export class CodeReader {
     const program = parseProgram(text, table.value, this.#store, null);
     const value = valueOf(program.root);
     const context = this.#context(program, text, table.value, value?.start ?? start, value?.end ?? end);
-    if (!value) return failure('unreadable', 'This code is no single expression; select one.', { start, end });
+    if (!value) return this.#followed(program, text, table.value, start, end);
     const read = attempt(() => readMeaning(value, context.environment));
     return read.ok ? success(this.#reading(value, read.value, true, text, table.value, context)) : read;
+  }
+
+  /** All comments of a document, delimiters off. */
+  readComments(text: string, language: string): readonly CommentText[] {
+    return this.#whole(text, language, (program, table) => commentTexts(program.comments, text, table)) ?? [];
+  }
+
+  /** Choices between a series and a direct form. */
+  readBranches(text: string, language: string): readonly SeriesBranch[] {
+    return this.#whole(text, language, (program, table) => seriesBranches(program, text, table)) ?? [];
+  }
+
+  /** Polynomials in one variable that the program evaluates. */
+  readPolynomials(text: string, language: string): readonly PolynomialCode[] {
+    return this.#whole(text, language, (program, table) => polynomialCode(program, text, table)) ?? [];
+  }
+
+  #whole<T>(text: string, language: string, use: (program: Program, table: CodeLanguage) => T): T | null {
+    const table = this.#table(text, language);
+    return table.ok ? use(parseProgram(text, table.value, this.#store, null), table.value) : null;
   }
 
   #table(text: string, language: string): Outcome<CodeLanguage> {
@@ -126,6 +149,22 @@ export class CodeReader {
     if (!table) return failure('bad-request', `Code in the language ${language.slice(0, 40)} cannot be read; name one of the supported languages.`);
     if (text.length > LONGEST_TEXT) return failure('bad-request', 'The text is too long; give only the part that holds the expression.');
     return success(table);
+  }
+
+  /** Several statements: the value of the one function there, or of the statements themselves, locals filled in. */
+  #followed(program: Program, text: string, language: CodeLanguage, start: number, end: number): Outcome<CodeReading> {
+    const functions: Code[] = [];
+    for (const code of walkWithin(program.root.kind === 'function' ? { kind: 'block', body: [program.root], start, end } : program.root)) {
+      for (const part of partsOf(code)) if (part.kind === 'function' && part.body) functions.push(part);
+    }
+    const [only] = functions;
+    const body = only && functions.length === 1 ? only : program.root;
+    const inner = body.kind === 'function' && body.body ? body.body : body;
+    const context = this.#context(program, text, language, inner.start, inner.end);
+    const read = attempt(() => (body.kind === 'function' ? functionValue(body, context.environment) : execute(body, context.environment)));
+    if (!read.ok) return read;
+    if (!read.value) return failure('unreadable', 'This code is no single expression; select one.', { start, end });
+    return success(this.#reading(body, read.value, false, text, language, context));
   }
 
   #context(program: Program, text: string, language: CodeLanguage, start: number, end: number): Context {

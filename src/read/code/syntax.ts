@@ -228,6 +228,20 @@ export function* walkCode(root: Code): Generator<Code> {
   }
 }
 
+/** Like walkCode, but functions inside the root are passed over. */
+export function* walkWithin(root: Code): Generator<Code> {
+  const stack: Code[] = [root];
+  for (let code = stack.pop(); code; code = stack.pop()) {
+    if (code !== root && (code.kind === 'function' || code.kind === 'lambda')) continue;
+    yield code;
+    const parts = partsOf(code);
+    for (let i = parts.length - 1; i >= 0; i -= 1) {
+      const part = parts[i];
+      if (part) stack.push(part);
+    }
+  }
+}
+
 /** The node and its ancestors around [start, end), outermost first; the last is the smallest that contains the range. */
 export function pathTo(root: Code, start: number, end: number): readonly Code[] {
   const path: Code[] = [];

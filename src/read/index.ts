@@ -13,3 +13,12 @@ export const readLatex = (text: string, options: ReadOptions = {}): Outcome<Expr
 export const readPlain = (text: string, options: ReadOptions = {}): Outcome<Expression> => readExpression(text, 'plain', options);
 export { type CommentSyntax, isKnownLanguage, type Language, languageOf, LANGUAGES, type StringRule } from './languages.ts';
 export { type Comment, type DocumentContent, findComments, type FormulaPlace, readDocument, type Region } from './document/index.ts';
+export { isEquation, isWorthExpanding, locate, type Located, type LocatedContext, type LocateOptions, mapSpans, orderMacroIn } from './locate.ts';
+export { candidates, type Candidate, type Candidates, type Found, ratiosOf, type Surroundings } from './candidates.ts';
+export { isBareName, isTruncated, orderTerms, principalSide } from './truncated.ts';
+export {
+  CODE_LANGUAGES, type CodeLanguage, codeLanguage, CodeReader, type CodeReading, type Coefficients, type CommentStyle, type CommentText, documentOffset, type EnclosingFunction, type FloatFormat,
+  type FormatEvidence, type FoundFormat, type GrammarHost, type NearbyConstant, type Piece, type PolynomialCode, type ReadOptions as CodeReadOptions, type Remark, type SeriesBranch,
+} from './code/index.ts';
+export { type Note, readNotes, type Settings, settingsAt } from './notes.ts';
+export { type DocumentStyle, documentStyle } from './style.ts';

@@ -5,7 +5,7 @@ import { compareExponents, exponentFromRational, isWhole, multiplyExponents, typ
 import { denestedCubeRoot, denestedSquareRoot, dependentSquareRoot } from './denest.ts';
 import { factorInteger } from './integers.ts';
 import type { Kernel } from './kernel.ts';
-import { monomialOf, multiplyMonomials, UNIT } from './monomial.ts';
+import { monomialOf, multiplyMonomials, UNIT, type Monomial } from './monomial.ts';
 import { isOnePolynomial, kernelsIn, scalePolynomial, type Polynomial } from './polynomial.ts';
 import { addElements, elementFromMonomial, elementFromPolynomial, elementKey, invertElement, isQuotient, multiplyElements, negateElement, partsOf, scaleElement, wholePower } from './quotient.ts';
 import { positiveRationalPower, radicandPower } from './radicals.ts';
@@ -178,7 +178,7 @@ function openPower(ctx: Context, base: Element, r: Rational, exponent: Exponent)
     if (root) return wholePower(ctx.table, root, Number(r.num));
   }
   const parts = partsOf(base);
-  const simple = parts.denominator.length === 0 && parts.monomial.exponents.every((e) => isWhole(e) && e > 0);
+  const simple = parts.denominator.length === 0 && parts.monomial.exponents.every((e) => compareExponents(e, 0) > 0);
   if (simple) return radicandPower(ctx, base, exponent);
   // N/D = N*D/D^2, and D^2 > 0 for real D.
   let bottom: Element = Q.ONE;
@@ -237,6 +237,10 @@ function exponentialOfTerm(ctx: Context, term: Element): Element {
     if (!isQuotient(rest)) return rationalPower(ctx, base, Q.multiply(coefficient, rest));
     return kernelElement(ctx, powerKernel(ctx, base, rest), exponentFromRational(coefficient));
   }
+  if (plain && coefficient.den === 1n) {
+    const inverse = exponentialOfInverse(ctx, unit.monomial, i);
+    if (inverse) return wholePower(ctx.table, inverse, Number(coefficient.num));
+  }
   if (plain && unit.monomial.kernels.includes(pi) && unit.monomial.kernels.includes(i)) {
     const others = unit.monomial.kernels.filter((k) => k !== pi && k !== i).map((k) => ctx.table.kernels[k] as Kernel);
     const whole = others.every((k) => k.shape.kind === 'parameter' && ctx.isInteger(k.shape.name)) && unit.monomial.exponents.every((e) => isWhole(e) && e > 0);
@@ -249,6 +253,36 @@ function exponentialOfTerm(ctx: Context, term: Element): Element {
     }
   }
   return kernelElement(ctx, expKernel(ctx, unit), exponentFromRational(coefficient));
+}
+
+/** exp(i asin x), exp(i acos x), exp(i atan x), exp(asinh x), exp(acosh x), exp(atanh x) without the inverse function (DLMF 4.23(iv), 4.37(iv)); null for anything else. */
+function exponentialOfInverse(ctx: Context, m: Monomial, i: number): Element | null {
+  const circular = m.kernels.length === 2 && m.kernels.includes(i);
+  if ((!circular && m.kernels.length !== 1) || m.exponents.some((e) => e !== 1)) return null;
+  const index = m.kernels.find((k) => k !== i);
+  const shape = index === undefined ? undefined : (ctx.table.kernels[index] as Kernel).shape;
+  const x = shape?.kind === 'call' ? shape.args[0] : undefined;
+  if (shape?.kind !== 'call' || x === undefined) return null;
+  const unit = kernelElement(ctx, imaginaryKernel(ctx));
+  const root = (a: Element): Element => rationalPower(ctx, a, Q.HALF);
+  const square = times(ctx, x, x);
+  const one = (a: Element): Element => plus(ctx, Q.ONE, a);
+  switch (`${circular ? 'i ' : ''}${shape.id}`) {
+    case 'i asin':
+      return plus(ctx, root(one(negateElement(square))), times(ctx, unit, x));
+    case 'i acos':
+      return plus(ctx, x, times(ctx, unit, root(one(negateElement(square)))));
+    case 'i atan':
+      return isRealSet(ctx.signs.of(x)) ? divideElements(ctx, one(times(ctx, unit, x)), root(one(square))) : null;
+    case 'asinh':
+      return plus(ctx, x, root(one(square)));
+    case 'acosh':
+      return plus(ctx, x, times(ctx, root(plus(ctx, x, Q.MINUS_ONE)), root(one(x))));
+    case 'atanh':
+      return isNonNegative(ctx.signs.of(one(negateElement(square)))) ? divideElements(ctx, one(x), root(one(negateElement(square)))) : null;
+    default:
+      return null;
+  }
 }
 
 /** log|c| for a rational c that is not zero. */

@@ -8,7 +8,7 @@ const complex = (re: number, im = 0): Complex => math.complex(re, im);
 /** NaN where the oracle has no value. */
 export function value(e: Expression, at: Readonly<Record<string, number>>): Complex {
   const inner = (x: Expression): Complex => value(x, at);
-  const call = (name: 'sqrt' | 'exp' | 'log' | 'sin' | 'cos' | 'tan' | 'sinh' | 'cosh' | 'tanh' | 'asin' | 'acos' | 'atan' | 'asinh' | 'acosh' | 'atanh', x: Expression): Complex => math.complex(math[name](inner(x) as never) as never);
+  const call = (name: 'sqrt' | 'exp' | 'log' | 'sin' | 'cos' | 'tan' | 'sinh' | 'cosh' | 'tanh' | 'asin' | 'acos' | 'atan' | 'asinh' | 'acosh' | 'atanh', x: Expression): Complex => math.complex((math[name] as (z: Complex) => Complex)(inner(x)));
   switch (e.kind) {
     case 'number':
       return complex(Q.toDouble(e.value));

@@ -99,5 +99,6 @@ export function scaled(a: Rational | Expression, b: Rational | Expression): Rati
 }
 export const q = (num: number | bigint, den: number | bigint = 1): Rational => Q.rational(num, den);
 export const sym = (name: string): Expression => build.symbol(name);
+export const bigO = (v: Value): Expression => ({ kind: 'order', little: false, argument: lift(v) });
 export const half: Rational = Q.HALF;
 export const argument = (args: readonly Expression[], index: number): Expression => args[index] ?? build.number(0);

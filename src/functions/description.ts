@@ -42,13 +42,9 @@ export interface FormalSeries {
   readonly divergent: boolean;
   /** Set where the series is finite: number of coefficients. */
   readonly length?: number;
-  /** Only for generalised (Dirichlet) series: term k is coefficient(k) * argument^exponent(k), exponents real and strictly increasing to infinity. zeta(s) is sum of exp(-s)^log(k+1). */
-  readonly exponent?: (k: number) => Expression;
-  /** Symbols in coefficients that stand for quantities varying slower than every power of `argument` (log log x beside 1/log x); coefficients are polynomials in them. Absent: coefficients are constants. */
-  readonly slow?: Readonly<Record<string, Expression>>;
 }
 
-/** The function near a place, as an expression in elementary functions and formal series. A symbol in `body` whose name is a key of `formals` stands for that series. */
+/** The function near a place, as an expression in elementary functions and formal series. A symbol in `body` whose name is a key of `formals` stands for that series; `body` may hold an O-term where the function is a sum over scales that no power series gives (Dirichlet series, powers of log log x). */
 export interface LocalForm {
   readonly body: Expression;
   readonly formals: Readonly<Record<string, FormalSeries>>;

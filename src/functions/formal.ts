@@ -7,7 +7,7 @@ import { asRational } from './exactForms.ts';
 type Coefficient = Rational | Expression;
 
 /** A series with cached coefficients. */
-export function series(argument: Expression, coefficient: (k: number) => Coefficient, options: { readonly divergent?: boolean; readonly length?: number; readonly slow?: FormalSeries['slow']; readonly exponent?: FormalSeries['exponent'] } = {}): FormalSeries {
+export function series(argument: Expression, coefficient: (k: number) => Coefficient, options: { readonly divergent?: boolean; readonly length?: number } = {}): FormalSeries {
   const cache: (Coefficient | undefined)[] = [];
   return {
     argument,
@@ -17,8 +17,6 @@ export function series(argument: Expression, coefficient: (k: number) => Coeffic
     },
     divergent: options.divergent ?? false,
     ...(options.length === undefined ? {} : { length: options.length }),
-    ...(options.slow ? { slow: options.slow } : {}),
-    ...(options.exponent ? { exponent: options.exponent } : {}),
   };
 }
 

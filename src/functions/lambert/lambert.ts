@@ -1,7 +1,7 @@
 /** Lambert W on all branches and the Wright omega function. Sources: DLMF 4.13; Corless, Gonnet, Hare, Jeffrey, Knuth, "On the Lambert W function", Adv. Comput. Math. 5 (1996), from memory where named. */
 import { build, type Expression, Q, type Rational } from '../../expression/index.ts';
-import { argument, call, exp, lift, log, neg, over, plus, pow, sqrt, sym, times } from '../compose.ts';
-import type { FormalSeries, LocalForm, Place } from '../description.ts';
+import { argument, bigO, call, exp, lift, log, neg, over, plus, pow, sqrt, times } from '../compose.ts';
+import type { LocalForm, Place } from '../description.ts';
 import { asInteger, asRational, isConstant } from '../exactForms.ts';
 import { atInfinity, F1, form, isAt, series } from '../formal.ts';
 import { factorial, fullRecurrence, recurrence, stirlingCycle } from '../sequences.ts';
@@ -21,23 +21,19 @@ const branchNumbers = (() => {
   });
 })();
 
-/** L1 - L2 + sum over l >= 0, m >= 1 of (-1)^l [l+m, l+1]/m! L2^m L1^(-l-m) (DLMF 4.13.10, Stirling cycle numbers), in powers of 1/L1 with L2 as the slow quantity. */
-function logarithmicSeries(L1: Expression, L2: Expression): FormalSeries {
-  const slow = sym('\\slow_1');
-  return series(
-    over(1, L1),
-    (k) => {
-      if (k === 0) return Q.ZERO;
-      const terms = Array.from({ length: k }, (_, i) => {
-        const m = i + 1;
-        const l = k - m;
-        const c = Q.rational((l % 2 === 0 ? 1n : -1n) * stirlingCycle(k, l + 1), factorial(m));
-        return times(c, pow(slow, m));
-      });
-      return plus(...terms);
-    },
-    { slow: { '\\slow_1': L2 } },
-  );
+/** Powers of 1/L1 that are written before the O-term. */
+const LOGARITHMIC_ORDERS = 14;
+
+/** L1 - L2 + sum over l >= 0, m >= 1 of (-1)^l [l+m, l+1]/m! L2^m L1^(-l-m) (DLMF 4.13.10, Stirling cycle numbers), and the next power of L2/L1 as O. */
+function logarithmicSum(L1: Expression, L2: Expression): Expression {
+  const terms: Expression[] = [];
+  for (let k = 1; k <= LOGARITHMIC_ORDERS; k++) {
+    for (let m = k; m >= 1; m--) {
+      const l = k - m;
+      terms.push(times(Q.rational((l % 2 === 0 ? 1n : -1n) * stirlingCycle(k, l + 1), factorial(m)), over(pow(L2, m), pow(L1, k))));
+    }
+  }
+  return plus(L1, neg(L2), ...terms, bigO(pow(over(L2, L1), LOGARITHMIC_ORDERS + 1)));
 }
 
 /** n-th derivative of W is exp(-nW) p_n(W)/(1+W)^(2n-1) with p_1 = 1, p_(n+1)(w) = -(nw + 3n - 1) p_n(w) + (1+w) p_n'(w) (Corless et al., eq. 3.5). */
@@ -79,7 +75,7 @@ export function lambertLocal(args: readonly Expression[], index: number, place: 
     const x = branch === 0 ? atInfinity(place, 1) : null;
     if (!x) return null;
     const [L1, L2] = [log(x), log(log(x))];
-    return form(plus(L1, neg(L2), F1), [logarithmicSeries(L1, L2)], 'DLMF 4.13.10');
+    return form(logarithmicSum(L1, L2), [], 'DLMF 4.13.10');
   }
   if (branchPoint(place)) {
     if (branch !== 0 && branch !== -1) return null;
@@ -91,7 +87,7 @@ export function lambertLocal(args: readonly Expression[], index: number, place: 
     if (branch !== -1) return null;
     const L1 = log(neg(place.offset));
     const L2 = log(neg(L1));
-    return form(plus(L1, neg(L2), F1), [logarithmicSeries(L1, L2)], 'DLMF 4.13.11');
+    return form(logarithmicSum(L1, L2), [], 'DLMF 4.13.11');
   }
   const center = place.center;
   const w = lambertValue([lift(branch), center]) ?? call('lambertW', branch, center);
@@ -131,7 +127,7 @@ const omegaPolynomials = recurrence<readonly bigint[]>([0n, 1n], (n, p) => {
 export function wrightLocal(_args: readonly Expression[], _index: number, place: Place): LocalForm | null {
   if (place.kind === 'infinite') {
     const x = place.argument;
-    if (place.direction === 1) return form(plus(x, neg(log(x)), F1), [logarithmicSeries(x, log(x))], 'DLMF 4.13.10 with ln x replaced by x');
+    if (place.direction === 1) return form(logarithmicSum(x, log(x)), [], 'DLMF 4.13.10 with ln x replaced by x');
     if (place.direction !== -1) return null;
     return form(F1, [series(exp(x), (k) => (k === 0 ? Q.ZERO : Q.rational((k % 2 === 0 ? -1n : 1n) * BigInt(k) ** BigInt(k - 1), factorial(k))))], 'DLMF 4.13.5 with argument exp(x)');
   }

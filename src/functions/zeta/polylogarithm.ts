@@ -1,6 +1,6 @@
 /** Polylogarithms and the functions of their circle: Clausen, inverse tangent integral, Debye. Sources: DLMF 25.12, Abramowitz & Stegun 27.1, 27.8. */
 import { build, type Expression, Q, type Rational } from '../../expression/index.ts';
-import { argument, call, exp, gamma, half, lift, log, minus, neg, over, pi, plus, pow, q, reciprocalGamma, scaled, square, times } from '../compose.ts';
+import { argument, bigO, call, exp, gamma, half, lift, log, minus, neg, over, pi, plus, pow, q, reciprocalGamma, scaled, square, times } from '../compose.ts';
 import type { FormalSeries, FunctionDescription, LocalForm, Place } from '../description.ts';
 import { asInteger, asMultipleOfPi, asRational } from '../exactForms.ts';
 import { alternating, atInfinity, F1, formalName, form, isAt, realLog, series } from '../formal.ts';
@@ -58,7 +58,10 @@ export function polylogLocal(args: readonly Expression[], index: number, place: 
   if (index === 0) {
     const order = atInfinity(place, 1);
     const x = argument(args, 1);
-    return order && form(F1, [series(exp(neg(order)), (k) => pow(x, k + 1), { exponent: (k) => (k === 0 ? lift(0) : log(k + 1)) })], 'DLMF 25.12.10');
+    if (!order) return null;
+    const count = 24;
+    const terms = Array.from({ length: count }, (_, i) => times(pow(x, i + 1), i === 0 ? 1 : exp(neg(times(order, log(i + 1))))));
+    return form(plus(...terms, bigO(exp(neg(times(order, log(count + 1)))))), [], 'DLMF 25.12.10');
   }
   if (place.kind === 'infinite') {
     if (place.direction !== 1 && place.direction !== -1) return null;

@@ -1,6 +1,6 @@
 /** Riemann and Hurwitz zeta functions and derivatives. Sources: DLMF 25.2, 25.4, 25.6, 25.11. */
 import { build, type Expression, Q } from '../../expression/index.ts';
-import { argument, call, euler, exp, lift, log, minus, neg, over, pi, plus, pow, q, scaled, sin, times } from '../compose.ts';
+import { argument, bigO, call, euler, exp, lift, log, minus, neg, over, pi, plus, pow, q, scaled, sin, times } from '../compose.ts';
 import type { FormalSeries, FunctionDescription, LocalForm, Place } from '../description.ts';
 import { asInteger, asRational } from '../exactForms.ts';
 import { alternating, atInfinity, F1, F2, form, isAt, series, taylor } from '../formal.ts';
@@ -10,10 +10,14 @@ import { zetaAtInteger } from './exactZeta.ts';
 
 const stieltjes = (n: number): Expression => (n === 0 ? euler : call('stieltjes', n));
 
-/** sum over k >= start of (-log k)^n k^-s as a Dirichlet series in exp(-s). */
-function dirichletSum(s: Expression, n: number): FormalSeries {
-  const start = n === 0 ? 1 : 2;
-  return series(exp(neg(s)), (k) => (n === 0 ? Q.ONE : times(n % 2 === 0 ? 1 : -1, pow(log(k + start), n))), { exponent: (k) => (k + start === 1 ? lift(0) : log(k + start)) });
+/** Terms of a Dirichlet series that are written before its O-term. */
+const DIRICHLET_TERMS = 32;
+
+/** sum of (-log k)^n k^-s for k up to a fixed number, and the next term as O. */
+function dirichletSum(s: Expression, n: number): Expression {
+  const term = (k: number): Expression => times(n % 2 === 0 ? 1 : -1, n === 0 ? 1 : pow(log(k), n), exp(neg(times(s, log(k)))));
+  const terms = Array.from({ length: DIRICHLET_TERMS - 1 }, (_, i) => term(i + 2));
+  return plus(n === 0 ? 1 : 0, ...terms, bigO(exp(neg(times(s, log(DIRICHLET_TERMS + 1))))));
 }
 
 /** zeta^(n)(a) where a closed form is known, else the call. */
@@ -35,7 +39,7 @@ function atOrigin(u: Expression): LocalForm {
 export function zetaLocal(_args: readonly Expression[], _index: number, place: Place): LocalForm | null {
   if (place.kind === 'infinite') {
     const s = atInfinity(place, 1);
-    return s && form(F1, [dirichletSum(s, 0)], 'DLMF 25.2.1');
+    return s && form(dirichletSum(s, 0), [], 'DLMF 25.2.1');
   }
   if (isAt(place, 1)) return form(plus(over(1, place.offset), F1), [series(place.offset, (k) => times(Q.divide(alternating(k), Q.rational(factorial(k))), stieltjes(k)))], 'DLMF 25.2.4');
   if (isAt(place, 0)) return atOrigin(place.offset);
@@ -47,7 +51,7 @@ export function zetaDerivativeLocal(args: readonly Expression[], index: number, 
   if (index !== 1 || n === null || n < 0) return null;
   if (place.kind === 'infinite') {
     const s = atInfinity(place, 1);
-    return s && form(F1, [dirichletSum(s, n)], 'DLMF 25.2.7');
+    return s && form(dirichletSum(s, n), [], 'DLMF 25.2.7');
   }
   if (isAt(place, 1)) {
     const pole = times(Q.multiply(alternating(n), Q.rational(factorial(n))), pow(place.offset, -n - 1));

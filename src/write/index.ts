@@ -5,5 +5,5 @@ export { NumericSymbols, toMpmath } from './mpmath.ts';
 export { toPlain } from './plain.ts';
 export { continuationLatex, equationLatex, expansionLatex, expansionNumeric, expansionText, remainderLatex, remainderText } from './expansion.ts';
 export { expansionTree, remainderArgument, termsTree, termTree } from './expansionTree.ts';
-export { FLOAT_FORMATS, hexFloat, isRepresentable, roundToFormat, shortestDecimal, type FloatFormat, type FloatParameters } from './float.ts';
+export { binaryExponent, FLOAT_FORMATS, hexFloat, isRepresentable, powerOfTwo, roundToFormat, shortestDecimal, type FloatFormat, type FloatParameters } from './float.ts';
 export * from './code/index.ts';

@@ -33,15 +33,15 @@ export function valueOf(code: Code): Code | null {
   switch (code.kind) {
     case 'return':
     case 'declare':
-      return code.value;
+      return code.value ? valueOf(code.value) : null;
     case 'assign':
-      return /^:?=$/.test(code.operator) ? code.value : null;
+      return /^:?=$/.test(code.operator) ? valueOf(code.value) : null;
     case 'block': {
       const [only] = code.body;
       return only && code.body.length === 1 ? valueOf(only) : null;
     }
     case 'function':
-      return code.body && code.body.kind !== 'block' ? valueOf(code.body) : code.body ? valueOf(code.body) : null;
+      return code.body ? valueOf(code.body) : null;
     case 'lambda':
       return valueOf(code.body);
     case 'import':

@@ -10,7 +10,7 @@ import { type PolynomialCode, polynomialCode, type SeriesBranch, seriesBranches 
 import { type CodeLanguage, codeLanguage, type CommentStyle, type FloatFormat } from './languages/index.ts';
 import { expressionAtCursor, nodeExactly, valueOf } from './locate.ts';
 import { readMeaning } from './meaning.ts';
-import { constantsOf, environmentAt, type NearbyConstant, type Scope, scopeAt } from './scope.ts';
+import { constantsOf, declarationsOf, environmentAt, type NearbyConstant, type Scope, scopeAt } from './scope.ts';
 import { type Code, partsOf, pathTo, type Program, walkWithin } from './syntax.ts';
 import type { FormatEvidence, ValueType } from './types.ts';
 
@@ -117,7 +117,8 @@ export class CodeReader {
     if (text.trim() === '') return failure('unreadable', 'The text is empty; write an expression.', { start: 0, end: text.length });
     const { start, end } = trimmed(text, { start: 0, end: text.length });
     const program = parseProgram(text, table.value, this.#store, null);
-    const value = valueOf(program.root);
+    const whole = valueOf(program.root);
+    const value = whole?.kind === 'opaque' && partsOf(whole).length > 0 ? null : whole;
     const context = this.#context(program, text, table.value, value?.start ?? start, value?.end ?? end);
     if (!value) return this.#followed(program, text, table.value, start, end);
     const read = attempt(() => readMeaning(value, context.environment));
@@ -176,7 +177,8 @@ export class CodeReader {
   #reading(code: Code, meaning: Meaning, replaceable: boolean, text: string, language: CodeLanguage, context: Context): CodeReading {
     const { scope, environment, remarks } = context;
     const macro = (start: number, end: number): Code | null => parseFragment(text, start, end, language, this.#store)?.root ?? null;
-    const { enclosing, statement, declarations } = scope;
+    const { enclosing, statement } = scope;
+    const declarations = declarationsOf(scope);
     return {
       expression: meaning.expression,
       span: { start: code.start, end: code.end },

@@ -2,9 +2,9 @@
 import { type Expression, freeSymbols, type Span } from '../../expression/index.ts';
 import { attempt } from '../../outcome.ts';
 import type { Environment, Imports, Remark } from './environment.ts';
-import { type CodeLanguage, } from './languages/index.ts';
+import type { CodeLanguage } from './languages/index.ts';
 import { readMeaning } from './meaning.ts';
-import type { AssignCode, Code, DeclareCode, FunctionCode, LambdaCode } from './syntax.ts';
+import type { AssignCode, Code, FunctionCode, LambdaCode } from './syntax.ts';
 import { pathTo, walkCode } from './syntax.ts';
 import { declaredType, floating, INTEGER, UNKNOWN, type ValueType } from './types.ts';
 
@@ -19,8 +19,12 @@ export interface Declaration {
   readonly outer: boolean;
 }
 
+/** The declarations of one block, function head or file, by name; the last one of a name counts. */
+type Level = ReadonlyMap<string, Declaration>;
+
 export interface Scope {
-  readonly declarations: readonly Declaration[];
+  /** Outermost first. */
+  readonly levels: readonly Level[];
   readonly imports: Imports;
   readonly importNodes: readonly { readonly path: string; readonly span: Span }[];
   readonly enclosing: FunctionCode | LambdaCode | null;
@@ -84,48 +88,92 @@ function importsOf(root: Code): { readonly imports: Imports; readonly nodes: rea
   return { imports: { modules, names, open }, nodes };
 }
 
-export function scopeAt(root: Code, start: number, end: number): Scope {
-  const path = pathTo(root, start, end);
-  const declarations: Declaration[] = [];
-  let enclosing: FunctionCode | LambdaCode | null = null;
-  let statement: Span | null = null;
-  let target: string | null = null;
-  path.forEach((code, i) => {
-    const outer = enclosing === null;
-    if (code.kind === 'function' || code.kind === 'lambda') {
-      enclosing = code;
-      for (const p of code.parameters) declarations.push({ name: p.name, type: p.type, value: null, constant: false, kind: 'parameter', span: { start: p.start, end: p.end }, outer: false });
-    }
-    if (code.kind === 'block' || code.kind === 'opaque') for (const inner of directly(code)) declarations.push(...declarationOf(inner, outer));
-    else if (i === 0) declarations.push(...declarationOf(code, true));
-    const parent = path[i - 1];
-    if ((parent === undefined || parent.kind === 'block' || parent.kind === 'function') && code.kind !== 'block' && code.kind !== 'function') statement = { start: code.start, end: code.end };
-    if (code.kind === 'declare') target = code.name;
-    if (code.kind === 'assign') target = targetName(code);
-  });
+/** What is known of a document as a whole, found once. */
+interface Facts {
+  readonly imports: Imports;
+  readonly nodes: readonly { readonly path: string; readonly span: Span }[];
+  readonly assignments: ReadonlyMap<string, number>;
+}
+const facts = new WeakMap<Code, Facts>();
+const levels = new WeakMap<Code, Level>();
+
+function factsOf(root: Code): Facts {
+  const known = facts.get(root);
+  if (known) return known;
   const assignments = new Map<string, number>();
   for (const code of walkCode(root)) {
     const name = code.kind === 'declare' && code.value ? code.name : code.kind === 'assign' ? targetName(code) : null;
     if (name !== null) assignments.set(name, (assignments.get(name) ?? 0) + 1);
   }
   const { imports, nodes } = importsOf(root);
-  return { declarations, imports, importNodes: nodes, enclosing, statement, target, assignments };
+  const found: Facts = { imports, nodes, assignments };
+  facts.set(root, found);
+  return found;
 }
+
+function levelOf(code: Code, outer: boolean): Level {
+  const known = levels.get(code);
+  if (known) return known;
+  const level = new Map<string, Declaration>();
+  const add = (d: Declaration): void => {
+    if (d.name !== '') level.set(d.name, d);
+  };
+  if (code.kind === 'function' || code.kind === 'lambda') for (const p of code.parameters) add({ name: p.name, type: p.type, value: null, constant: false, kind: 'parameter', span: { start: p.start, end: p.end }, outer: false });
+  else if (code.kind === 'block' || code.kind === 'opaque') for (const inner of directly(code)) for (const d of declarationOf(inner, outer)) add(d);
+  else for (const d of declarationOf(code, outer)) add(d);
+  levels.set(code, level);
+  return level;
+}
+
+/** The surroundings of [start, end). After the first question about a document the cost is that of the path down to the place. */
+export function scopeAt(root: Code, start: number, end: number): Scope {
+  const path = pathTo(root, start, end);
+  const found: Level[] = [];
+  let enclosing: FunctionCode | LambdaCode | null = null;
+  let statement: Span | null = null;
+  let target: string | null = null;
+  path.forEach((code, i) => {
+    const opens = code.kind === 'function' || code.kind === 'lambda' || code.kind === 'block' || code.kind === 'opaque';
+    const own: Code = code;
+    if (i === 0 && !(code.kind === 'block' || code.kind === 'opaque')) {
+      const level = new Map(declarationOf(own, true).map((d) => [d.name, d]));
+      found.push(level);
+    }
+    if (opens) found.push(levelOf(code, enclosing === null));
+    if (code.kind === 'function' || code.kind === 'lambda') enclosing = code;
+    const parent = path[i - 1];
+    if ((parent === undefined || parent.kind === 'block' || parent.kind === 'function') && code.kind !== 'block' && code.kind !== 'function') statement = { start: code.start, end: code.end };
+    if (code.kind === 'declare') target = code.name;
+    if (code.kind === 'assign') target = targetName(code);
+  });
+  const { imports, nodes, assignments } = factsOf(root);
+  return { levels: found, imports, importNodes: nodes, enclosing, statement, target, assignments };
+}
+
+/** Every visible declaration, outermost first. */
+export const declarationsOf = (scope: Scope): readonly Declaration[] => scope.levels.flatMap((level) => [...level.values()]);
 
 /** The environment of a place. Types of names without a written type are those of their values. */
 export function environmentAt(scope: Scope, text: string, language: CodeLanguage, remarks: Remark[]): Environment {
-  const byName = new Map<string, Declaration>();
   const fold = (name: string): string => (language.foldCase ? name.toLowerCase() : name);
-  for (const declaration of scope.declarations) byName.set(fold(declaration.name), declaration);
+  const folded = language.foldCase ? scope.levels.map((level): Level => new Map([...level].map(([name, d]) => [fold(name), d]))) : scope.levels;
+  const find = (name: string): Declaration | undefined => {
+    const key = fold(name);
+    for (let i = folded.length - 1; i >= 0; i -= 1) {
+      const found = folded[i]?.get(key);
+      if (found) return found;
+    }
+    return undefined;
+  };
   const spelling = new Map<string, string>();
   const types = new Map<string, ValueType>();
-  const hidden = language.family === 'fortran' && !/\bimplicit\s+none\b/i.test(text);
+  const implicit = (language.implicitIntegers ?? false) && !hasImplicitNone(text);
   const environment: Environment = {
     language,
     text,
     imports: scope.imports,
-    isLocal: (name) => byName.has(fold(name)),
-    isLocalFunction: (name) => byName.get(fold(name))?.kind === 'function',
+    isLocal: (name) => find(name) !== undefined,
+    isLocalFunction: (name) => find(name)?.kind === 'function',
     remark: (span, message) => remarks.push({ span, message }),
     spell: (name) => {
       if (!language.foldCase) return name;
@@ -140,17 +188,28 @@ export function environmentAt(scope: Scope, text: string, language: CodeLanguage
       if (known) return known;
       // A value that names itself ends here.
       types.set(key, UNKNOWN);
-      const declaration = byName.get(key);
+      const declaration = find(name);
       let type: ValueType = UNKNOWN;
       if (declaration) {
         type = declaredType(declaration.type, language);
-        if (type.kind === 'unknown' && declaration.value && /^(?:|auto|var|let|val|const|:=|#define|const auto|constexpr auto|implicit_type)$/.test(declaration.type.trim())) type = typeOfValue(declaration.value, environment);
-      } else if (hidden && language.implicitIntegers && /^[i-n]/i.test(name)) type = INTEGER;
+        if (type.kind === 'unknown' && declaration.value && /^(?:|auto|var|let|val|const|:=|const auto|constexpr auto|static constexpr auto)$/.test(declaration.type.trim())) type = typeOfValue(declaration.value, environment);
+      } else if (implicit && /^[i-n]/i.test(name)) type = INTEGER;
       types.set(key, type);
       return type;
     },
   };
   return environment;
+}
+
+const withNone = new Map<string, boolean>();
+/** Remembers the last text only. */
+function hasImplicitNone(text: string): boolean {
+  const known = withNone.get(text);
+  if (known !== undefined) return known;
+  withNone.clear();
+  const found = /\bimplicit\s+none\b/i.test(text);
+  withNone.set(text, found);
+  return found;
 }
 
 function typeOfValue(value: Code, environment: Environment): ValueType {
@@ -171,7 +230,7 @@ export interface NearbyConstant {
 /** Names near the place whose value is a constant: declared constant, or assigned once to a number. */
 export function constantsOf(scope: Scope, environment: Environment, macro: (start: number, end: number) => Code | null): readonly NearbyConstant[] {
   const found = new Map<string, NearbyConstant>();
-  for (const declaration of scope.declarations) {
+  for (const declaration of declarationsOf(scope)) {
     if (declaration.kind !== 'variable' || !declaration.value) continue;
     if ((scope.assignments.get(declaration.name) ?? 0) > 1) continue;
     const code = declaration.value.kind === 'opaque' && declaration.value.what === 'macro' ? macro(declaration.value.start, declaration.value.end) : declaration.value;
@@ -183,5 +242,3 @@ export function constantsOf(scope: Scope, environment: Environment, macro: (star
   }
   return [...found.values()];
 }
-
-export type { DeclareCode };

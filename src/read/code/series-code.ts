@@ -24,7 +24,8 @@ export interface SeriesBranch {
   readonly direct: Expression;
   readonly directSpan: Span;
   readonly function: string | null;
-  readonly format: FloatFormat | null;
+  /** Of the direct form; the language's default where the code does not show it. */
+  readonly format: FloatFormat;
 }
 
 export interface PolynomialCode {
@@ -38,7 +39,7 @@ export interface PolynomialCode {
   /** The variable it goes to, or null. */
   readonly target: string | null;
   readonly function: string | null;
-  readonly format: FloatFormat | null;
+  readonly format: FloatFormat;
 }
 
 /** Every function with a body, and the program's own level, each with the environment inside it. */
@@ -77,7 +78,7 @@ export function seriesBranches(program: Program, text: string, language: CodeLan
       const [seriesFirst, seriesLast] = [isSeriesBeside(yes.expression, no.expression), isSeriesBeside(no.expression, yes.expression)];
       if (!seriesFirst && !seriesLast) return;
       const comparison = attempt(() => conditionOf(condition, body.environment, bindings));
-      const format = (seriesFirst ? no : yes).type.format;
+      const format = (seriesFirst ? no : yes).type.format ?? language.literalFormat;
       found.set(`${whole.start}:${whole.end}`, {
         span: span(whole),
         condition: comparison.ok ? comparison.value : null,
@@ -156,7 +157,7 @@ export function polynomialCode(program: Program, text: string, language: CodeLan
           const coefficients = variable !== undefined && free.length === 1 && body.environment.typeOf(variable).kind !== 'integer' ? polynomialIn(now.value.meaning.expression, variable) : null;
           if (variable !== undefined && coefficients && coefficients.length > 2 && coefficients.filter((c) => c.num !== 0n).length > 1) {
             const own = now.value.meaning.type;
-            found.push({ span: span(code), expression: now.value.meaning.expression, variable, coefficients, degree: coefficients.length - 1, target, function: body.name, format: own.weak ? (type?.format ?? own.format) : own.format, through: now.value.through, body: body.code });
+            found.push({ span: span(code), expression: now.value.meaning.expression, variable, coefficients, degree: coefficients.length - 1, target, function: body.name, format: (own.weak ? (type?.format ?? own.format) : own.format) ?? language.literalFormat, through: now.value.through, body: body.code });
             return;
           }
         }

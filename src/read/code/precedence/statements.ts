@@ -453,7 +453,7 @@ class StatementReader {
         words.push(this.#sliceFrom(from));
       } else words.push(p.next().text);
     }
-    const type = words.join(' ');
+    const type = words.join(' ').replace(/ (?=[(,])/g, '');
     const first = p.peek();
     if (first.kind !== 'name') {
       p.position = start;

@@ -157,6 +157,12 @@ export function tokenize(text: string, language: CodeLanguage, start: number, en
     }
     const string = stringEnd(text, at, end, language, afterValue);
     if (string > at) {
+      // Julia: a string that opens a statement documents what follows.
+      if (language.family === 'julia' && (previous === undefined || previous.kind === 'newline') && /^[ \t]*\r?\n/.test(text.slice(string, string + 200))) {
+        comments.push({ start: at, end: string, doc: true });
+        at = string;
+        continue;
+      }
       push('text', string);
       continue;
     }

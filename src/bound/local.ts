@@ -1,0 +1,148 @@
+/** Models of f, of the sum and of the remainder on a segment. */
+import { build, type Expression, Q, type Rational, substitute } from '../expression/index.ts';
+import { type Expansion, partialSum } from '../expand/index.ts';
+import { describe } from '../functions/index.ts';
+import { Declined } from '../outcome.ts';
+import { type Model, type ModelArithmetic, modelArithmetic, modelOfTree, rationalOf } from '../rigorous/index.ts';
+import type { Numbers } from './numbers.ts';
+import { isExactlyZero, type Segment } from './region.ts';
+
+/** A model in s on a sub-interval of its unit domain. */
+export interface Local<T> {
+  readonly m: ModelArithmetic<T>;
+  readonly f: Model<T>;
+  /** s in [from, to]. */
+  readonly from: T;
+  readonly to: T;
+  /** t = scale * s^denominator. */
+  readonly scale: T;
+  readonly denominator: number;
+  /** Sign of t on this segment in the expansion's own local variable. */
+  readonly sign: 1 | -1;
+}
+
+const PARAMETER_LIMIT = 64;
+
+function parameterModels<T>(n: Numbers<T>, m: ModelArithmetic<T>): Map<string, Model<T>> {
+  return new Map([...n.parameters].map(([name, value]) => [name, m.constant(value)] as const));
+}
+
+export function modelOf<T>(e: Expression, n: Numbers<T>, m: ModelArithmetic<T>, variable: string, leaf: Model<T>, vanishes?: (e: Expression) => boolean, check?: () => void): Model<T> | null {
+  const environment = new Map([...parameterModels(n, m), [variable, leaf] as const]);
+  if (environment.size > PARAMETER_LIMIT) return null;
+  return modelOfTree(e, { m, trees: n.trees, real: n.r, describe, environment, vanishes, check });
+}
+
+/** The least q that makes every power of the expansion a whole multiple of 1/q; null where a power is not a rational number. */
+export function denominatorOf(expansion: Expansion): number | null {
+  let q = 1n;
+  const powers = [...expansion.terms.map((t) => t.power), ...(expansion.remainder?.power ? [expansion.remainder.power] : [])];
+  for (const power of powers) {
+    const value = rationalOf(power);
+    if (value === null) return null;
+    q = (q * value.den) / Q.gcd(q, value.den);
+  }
+  return q > 60n ? null : Number(q);
+}
+
+/** f about the local end of a segment, with the whole segment as domain: s = 1 at the far end. */
+export function localModel<T>(segment: Segment, to: Expression | null, n: Numbers<T>, variable: string, length: number, q: number, check: () => void): Local<T> | null {
+  const { r } = n;
+  const infinite = segment.local === 'upper' ? segment.upper === null || segment.expansion.point === 'inf' : segment.lower === null || segment.expansion.point === '-inf';
+  const m = modelArithmetic(r, n.unitRight, length, true);
+  const sideSign = segment.local === 'lower' ? 1 : -1;
+  const zeros = Array.from({ length: q - 1 }, () => r.zero);
+  if (infinite) {
+    const far = segment.local === 'upper' ? segment.lower : segment.upper;
+    const near = segment.local === 'upper' ? segment.upper : segment.lower;
+    const start = far && n.value(far);
+    if (start === null || r.containsZero(start)) return null;
+    // x = start / s^q; the end nearer to infinity is s = (start/near)^(1/q).
+    const leaf = m.polynomial([start], -q);
+    const f = modelOf(segment.expansion.function, n, m, variable, leaf, undefined, check);
+    const scale = r.divide(r.one, start);
+    if (f === null || scale === null) return null;
+    const nearValue = near === null ? null : n.value(near);
+    const ratio = nearValue === null ? r.zero : r.divide(start, nearValue);
+    const from = ratio === null ? null : q === 1 ? ratio : r.root(r.maximum(ratio, r.zero), q);
+    return from === null ? null : { m, f, from, to: r.one, scale: r.absolute(scale), denominator: q, sign: r.isPositive(scale) ? 1 : -1 };
+  }
+  const centreTree = segment.local === 'lower' ? segment.lower : segment.upper;
+  const farTree = to ?? (segment.local === 'lower' ? segment.upper : segment.lower);
+  if (centreTree === null || farTree === null) return null;
+  const [centre, far] = [n.value(centreTree), n.value(farTree)];
+  if (centre === null || far === null) return null;
+  const scale = r.absolute(r.subtract(far, centre));
+  const leaf = m.polynomial([centre, ...zeros, sideSign > 0 ? scale : r.negate(scale)]);
+  const vanishes = (e: Expression): boolean => {
+    if (r.isZero(centre) && r.isPoint(centre)) return false;
+    return isExactlyZero(substitutePoint(e, variable, centreTree), []);
+  };
+  const f = modelOf(segment.expansion.function, n, m, variable, leaf, vanishes, check);
+  if (f === null) return null;
+  const sign = segment.expansion.side === 'left' ? (sideSign > 0 ? -1 : 1) : sideSign;
+  return { m, f, from: r.zero, to: r.one, scale, denominator: q, sign };
+}
+
+const substitutePoint = (e: Expression, variable: string, point: Expression): Expression => substitute(e, variable, point);
+
+/** The model of f - sum where the local end is the point of expansion: the terms of the sum are coefficients of f, so what is left is the rest of them. */
+export function remainderAtPoint<T>(local: Local<T>, expansion: Expansion, n: Numbers<T>): Model<T> | null {
+  const { m, f, scale, denominator, sign } = local;
+  const { r } = n;
+  if (expansion.remainder === null) return m.constant(r.zero);
+  const order = expansion.remainder.power === null ? null : rationalOf(expansion.remainder.power);
+  if (order === null || expansion.prefactor !== null || expansion.remainder.scale !== null || expansion.terms.some((t) => t.log !== 0 || t.scale !== null)) return null;
+  const first = ceilingOf(Q.multiply(order, { num: BigInt(denominator), den: 1n }));
+  const expected = new Map<number, T>();
+  for (const term of expansion.terms) {
+    const power = rationalOf(term.power);
+    if (power === null) return null;
+    const index = Number(Q.multiply(power, { num: BigInt(denominator), den: 1n }).num);
+    const value = n.value(term.coefficient);
+    const size = r.powerRational(scale, power);
+    if (value === null || size === null) return null;
+    const signed = sign < 0 && power.num % 2n !== 0n ? r.negate(value) : value;
+    if (sign < 0 && power.den !== 1n) return null;
+    expected.set(index, r.multiply(signed, size));
+  }
+  for (let k = 0; k < f.coefficients.length && f.valuation + k < first; k += 1) {
+    const have = f.coefficients[k] ?? r.zero;
+    const want = expected.get(f.valuation + k) ?? r.zero;
+    if (!r.containsZero(r.subtract(have, want))) throw new Declined('undecided', 'The expansion and the coefficients of the function disagree, so no bound was derived; please report this expression.');
+  }
+  const kept = f.coefficients.slice(Math.max(0, first - f.valuation));
+  const valuation = Math.max(first, f.valuation);
+  if (f.valuation + f.coefficients.length < first) return null;
+  const rest = m.polynomial(kept, valuation);
+  if (r.isZero(f.tail)) return rest;
+  const end = f.valuation + f.coefficients.length;
+  return { valuation, coefficients: kept, tail: f.tail, range: kept.length === 0 ? f.tail : rangeWithTail(m, kept, f.tail, end - valuation) };
+}
+
+function rangeWithTail<T>(m: ModelArithmetic<T>, c: readonly T[], tail: T, steps: number): T {
+  let value = tail;
+  for (let k = steps - 1; k >= 0; k -= 1) value = m.a.add(c[k] ?? m.a.zero, m.a.multiply(m.domain, value));
+  return value;
+}
+
+const ceilingOf = (q: Rational): number => -Number(Q.floor(Q.negate(q)));
+
+/** f - sum about the middle of [x0, x1], s in [-1, 1]. */
+export function middleModel<T>(expansion: Expansion, sum: Expression, x0: T, x1: T, n: Numbers<T>, variable: string, length: number, check: () => void): { readonly f: Model<T>; readonly remainder: Model<T>; readonly m: ModelArithmetic<T> } | null {
+  const { r } = n;
+  const m = modelArithmetic(r, n.unitBoth, length, false);
+  const whole = r.union(x0, x1);
+  const centre = r.midpoint(whole);
+  const half = r.upperEnd(r.absolute(r.subtract(whole, centre)));
+  const leaf = m.withRange(m.polynomial([centre, half]), whole);
+  const f = modelOf(expansion.function, n, m, variable, leaf, undefined, check);
+  if (f === null) return null;
+  const s = modelOf(sum, n, m, variable, leaf, undefined, check);
+  if (s === null) return null;
+  const remainder = m.regular(m.subtract(f, s));
+  const regularF = m.regular(f);
+  return remainder === null || regularF === null ? null : { f: regularF, remainder, m };
+}
+
+export const sumOf = (expansion: Expansion): Expression => (expansion.terms.length === 0 ? build.number(0) : partialSum(expansion));

@@ -1,0 +1,118 @@
+/** Best-first refinement of pieces: sup |f - sum| over finite segments that do not touch the point of expansion. */
+import type { Expression } from '../expression/index.ts';
+import type { Expansion } from '../expand/index.ts';
+import { type Model, modelArithmetic } from '../rigorous/index.ts';
+import { middleModel, modelOf } from './local.ts';
+import type { Numbers } from './numbers.ts';
+import { supremumOfModel } from './supremum.ts';
+import type { Measure } from './types.ts';
+
+export interface PieceTask<T> {
+  readonly x0: T;
+  readonly x1: T;
+  readonly expansion: Expansion;
+  readonly sum: Expression;
+  /** Ends of the interval at which f may have a branch point. */
+  readonly touches: 'lower' | 'upper' | 'none';
+}
+
+export interface Enclosed<T> {
+  readonly upper: T | null;
+  readonly lower: T;
+  readonly pieces: number;
+  /** Middle of the smallest piece on which no bound exists. */
+  readonly trouble?: T;
+}
+
+interface Piece<T> extends PieceTask<T> {
+  readonly upper: T | null;
+}
+
+export interface PieceOptions {
+  readonly variable: string;
+  readonly measure: Measure;
+  readonly slack: number;
+  readonly most: number;
+  readonly length: number;
+  readonly check: () => void;
+}
+
+/** The remainder (or its ratio to f) at one number; null where undefined. */
+export function remainderAt<T>(x: T, task: { readonly expansion: Expansion; readonly sum: Expression }, n: Numbers<T>, options: { readonly variable: string; readonly measure: Measure }): T | null {
+  const place = new Map([[options.variable, x]]);
+  const [f, s] = [n.value(task.expansion.function, place), n.value(task.sum, place)];
+  if (f === null || s === null) return null;
+  const difference = n.r.subtract(f, s);
+  return options.measure === 'absolute' ? difference : n.r.divide(difference, f);
+}
+
+export function refinePieces<T>(tasks: readonly PieceTask<T>[], floor: T, n: Numbers<T>, options: PieceOptions): Enclosed<T> {
+  const { r } = n;
+  const absLower = (x: T): T => r.lowerEnd(r.absolute(x));
+  const absUpper = (x: T): T => r.upperEnd(r.absolute(x));
+  let lower = floor;
+  const offer = (y: T | null): void => {
+    if (y !== null) lower = r.lowerEnd(r.maximum(lower, absLower(y)));
+  };
+  const bound = (task: PieceTask<T>): T | null => {
+    options.check();
+    offer(remainderAt(r.midpoint(r.union(task.x0, task.x1)), task, n, options));
+    const models = middleModel(task.expansion, task.sum, task.x0, task.x1, n, options.variable, options.length, options.check);
+    const g = models === null ? null : options.measure === 'absolute' ? models.remainder : models.m.divide(models.remainder, models.f);
+    if (g !== null && g.valuation >= 0) {
+      const result = supremumOfModel(r, g, { from: r.negate(r.one), to: r.one, floor: lower, slack: options.slack / 4, most: 60, check: options.check });
+      lower = r.lowerEnd(r.maximum(lower, result.lower));
+      return result.upper;
+    }
+    return endBound(task) ?? rangeBound(task);
+  };
+  /** A branch point at an end of the interval: one-sided model in the root of the distance. */
+  const endBound = (task: PieceTask<T>): T | null => {
+    if (task.touches === 'none') return null;
+    for (const q of [1, 2, 3]) {
+      const m = modelArithmetic(r, n.unitRight, options.length, true);
+      const end = task.touches === 'lower' ? task.x0 : task.x1;
+      const width = r.upperEnd(r.absolute(r.subtract(task.x1, task.x0)));
+      const zeros = Array.from({ length: q - 1 }, () => r.zero);
+      const leaf = m.withRange(m.polynomial([end, ...zeros, task.touches === 'lower' ? width : r.negate(width)]), r.union(task.x0, task.x1));
+      const [f, s] = [modelOf(task.expansion.function, n, m, options.variable, leaf, undefined, options.check), modelOf(task.sum, n, m, options.variable, leaf, undefined, options.check)];
+      if (f === null || s === null) continue;
+      const remainder: Model<T> = m.subtract(f, s);
+      const g = options.measure === 'absolute' ? remainder : m.divide(remainder, f);
+      if (g === null || g.valuation < 0) continue;
+      const result = supremumOfModel(r, g, { from: r.zero, to: r.one, floor: lower, slack: options.slack / 4, most: 60, check: options.check });
+      lower = r.lowerEnd(r.maximum(lower, result.lower));
+      return result.upper;
+    }
+    return null;
+  };
+  /** Nothing but ranges: coarse, but it needs no derivative. */
+  const rangeBound = (task: PieceTask<T>): T | null => {
+    const value = remainderAt(r.union(task.x0, task.x1), task, n, options);
+    return value === null ? null : absUpper(value);
+  };
+
+  for (const task of tasks) {
+    offer(remainderAt(r.lowerEnd(task.x0), task, n, options));
+    offer(remainderAt(r.upperEnd(task.x1), task, n, options));
+  }
+  const open: Piece<T>[] = tasks.map((task) => ({ ...task, upper: bound(task) }));
+  const larger = (a: T | null, b: T | null): boolean => (a === null ? b !== null : b !== null && r.isPositive(r.subtract(a, b)));
+  let pieces = open.length;
+  for (;;) {
+    let worst = 0;
+    for (let k = 1; k < open.length; k += 1) if (larger(open[k]?.upper ?? null, open[worst]?.upper ?? null)) worst = k;
+    const piece = open[worst];
+    if (piece === undefined) return { upper: lower, lower, pieces };
+    const target = r.multiply(lower, r.fromRational({ num: BigInt(Math.round((1 + options.slack) * 2 ** 30)), den: 1n << 30n }));
+    if (piece.upper !== null && !r.isPositive(r.subtract(piece.upper, target))) return { upper: r.upperEnd(r.maximum(piece.upper, lower)), lower, pieces };
+    const middle = r.midpoint(r.union(piece.x0, piece.x1));
+    const exhausted = pieces >= options.most || !r.isPositive(r.subtract(middle, r.lowerEnd(piece.x0))) || !r.isPositive(r.subtract(r.upperEnd(piece.x1), middle));
+    if (exhausted) return piece.upper === null ? { upper: null, lower, pieces, trouble: middle } : { upper: piece.upper, lower, pieces };
+    const left: PieceTask<T> = { ...piece, x1: middle, touches: piece.touches === 'upper' ? 'none' : piece.touches };
+    const right: PieceTask<T> = { ...piece, x0: middle, touches: piece.touches === 'lower' ? 'none' : piece.touches };
+    open[worst] = { ...left, upper: bound(left) };
+    open.push({ ...right, upper: bound(right) });
+    pieces += 1;
+  }
+}

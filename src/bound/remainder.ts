@@ -1,0 +1,313 @@
+/** sup |f - sum| over an interval, with proof: local model at the point, pieces elsewhere; doubles first, balls where digits cancel. */
+import { build, type Expression, freeSymbols, Q, type Rational } from '../expression/index.ts';
+import type { Expansion } from '../expand/index.ts';
+import { Declined } from '../outcome.ts';
+import { type Ball, real } from '../rigorous/index.ts';
+import { denominatorOf, localModel, remainderAtPoint, sumOf, type Local, modelOf } from './local.ts';
+import { ballNumbers, doubles, type Numbers, type ParameterBalls } from './numbers.ts';
+import { type PieceTask, refinePieces, remainderAt } from './pieces.ts';
+import { parameterBalls, type Segment, segmentsOf } from './region.ts';
+import { supremumOfModel } from './supremum.ts';
+import type { BoundProblem, RemainderBound } from './types.ts';
+
+/** Upper over lower bound that counts as settled. */
+const SETTLED = 1.001;
+const SLACK = 4e-4;
+const EXTRA = 14;
+const DIGITS = 7;
+
+interface Result {
+  /** Null: no finite bound. */
+  readonly upper: Ball | null;
+  readonly lower: Ball;
+  readonly steps: readonly string[];
+  readonly place?: Expression;
+  /** The place is proven to be one where the remainder is unbounded. */
+  readonly unbounded?: boolean;
+  readonly method: string;
+}
+
+export function bound(problem: BoundProblem): RemainderBound {
+  const { expansion, assumptions, budget } = problem;
+  if (expansion.exact && !expansion.left) return { value: '0', lower: '0', upperRational: Q.ZERO, lowerRational: Q.ZERO, method: 'the sum is the function', proof: ['The sum equals the function on the whole side.'] };
+  const variable = variableName(expansion);
+  const names = freeSymbols(expansion.function).filter((name) => name !== variable);
+  const parameters = parameterBalls(names, assumptions);
+  const missing = names.filter((name) => !parameters.has(name));
+  if (missing.length > 0) throw new Declined('needs-assumption', `A bound needs a range for ${missing.join(', ')}; add an assumption such as 0.9 <= ${missing[0] ?? 'c'} <= 1.1.`);
+  const segments = segmentsOf(expansion, problem.interval, assumptions);
+  let best: Result | null = null;
+  const improve = (next: Result | null): void => {
+    if (next === null) return;
+    if (best === null) {
+      best = next;
+      return;
+    }
+    const upper = best.upper === null ? next.upper : next.upper === null || real.compare(best.upper, next.upper) === -1 ? best.upper : next.upper;
+    const lower = real.compare(best.lower, next.lower) === 1 ? best.lower : next.lower;
+    best = { ...next, upper, lower };
+  };
+  const check = (): void => budget.check();
+  const settled = (result: Result | null): boolean => result !== null && (result.unbounded === true || (result.upper !== null && ratioOf(result) <= SETTLED));
+  improve(run(doubles(parameters), segments, problem, variable, check));
+  let precision = 128;
+  for (let round = 0; round < 4 && !settled(best); round += 1) {
+    const before: Result | null = best;
+    try {
+      improve(run(ballNumbers(precision, parameters), segments, problem, variable, check));
+    } catch (error) {
+      if (error instanceof Declined && error.failure.code === 'over-budget' && before !== null && (before as Result).upper !== null) break;
+      throw error;
+    }
+    precision *= 2;
+  }
+  return answer(best);
+}
+
+export function variableName(expansion: Expansion): string {
+  if (expansion.variable.kind !== 'symbol') throw new Declined('bad-request', 'The variable must be one symbol.');
+  return expansion.variable.name;
+}
+
+function ratioOf(result: Result): number {
+  if (result.upper === null || !real.isPositive(result.lower)) return Infinity;
+  const quotient = real.divide(result.upper, result.lower, 60);
+  return quotient === null ? Infinity : real.toDouble(quotient);
+}
+
+function answer(result: Result | null): RemainderBound {
+  if (result === null) throw new Declined('undecided', 'No bound could be proved on this interval; try a smaller one.');
+  if (result.upper === null) {
+    if (result.unbounded) return { value: null, lower: null, upperRational: null, lowerRational: null, method: result.method, proof: result.steps, place: result.place };
+    throw new Declined('undecided', 'No bound could be proved on this interval; try a smaller one.');
+  }
+  const [upper, lower] = [roundedUp(real.upper(result.upper)), real.lower(result.lower)];
+  return {
+    value: real.rationalToDecimal(upper, DIGITS, 1),
+    lower: real.rationalToDecimal(lower, DIGITS, -1),
+    upperRational: upper,
+    lowerRational: lower,
+    method: result.method,
+    proof: result.steps,
+  };
+}
+const roundedUp = (q: Rational): Rational => (q.num < 0n ? Q.ZERO : q);
+
+function run<T>(n: Numbers<T>, segments: readonly Segment[], problem: BoundProblem, variable: string, check: () => void): Result | null {
+  const { r } = n;
+  const { measure } = problem;
+  const length = n.precision <= 53 ? 14 : Math.min(40, 14 + Math.floor(n.precision / 16));
+  const options = { variable, measure, slack: SLACK, most: n.precision <= 53 ? 400 : 120, length, check };
+  let lower = r.zero;
+  let upper: T = r.zero;
+  const steps: string[] = [];
+  const methods = new Set<string>();
+  const tasks: PieceTask<T>[] = [];
+  const raise = (x: T): void => {
+    lower = r.lowerEnd(r.maximum(lower, x));
+  };
+  // Values at the ends first: they are lower bounds, and often the maximum.
+  for (const segment of segments) {
+    for (const end of [segment.lower, segment.upper]) {
+      const x = end === null ? null : n.value(end);
+      const y = x === null ? null : remainderAt(x, { expansion: segment.expansion, sum: sumOf(segment.expansion) }, n, options);
+      if (y !== null) raise(r.lowerEnd(r.absolute(y)));
+    }
+  }
+  const show = (x: T): string => {
+    const ball = n.toBall(x);
+    return ball === null ? '?' : real.toDecimalUp(ball, 5);
+  };
+  for (const segment of segments) {
+    const sum = sumOf(segment.expansion);
+    if (segment.local === 'none') {
+      const task = wholeTask(segment, sum, n);
+      if (task === null) return null;
+      tasks.push(task);
+      continue;
+    }
+    const near = segment.atPoint ? atPoint(segment, n, problem, variable, lower, check) : atInfinity(segment, sum, n, problem, variable, lower, check);
+    if (near === null) return null;
+    if (near.kind === 'unbounded') return { upper: null, lower: n.toBall(r.zero) ?? real.ZERO, steps: near.steps, place: near.place, unbounded: true, method: 'leading term of the remainder' };
+    raise(near.lower);
+    upper = r.upperEnd(r.maximum(upper, near.upper));
+    steps.push(...near.steps(show));
+    methods.add('local series with proven remainder factor');
+    if (near.rest) tasks.push(near.rest);
+  }
+  if (tasks.length > 0) {
+    const result = refinePieces(tasks, lower, n, options);
+    raise(result.lower);
+    steps.push(`${result.pieces} pieces with Taylor models of ${length} coefficients, ${n.precision} bits.`);
+    methods.add('Taylor models on pieces');
+    if (result.upper !== null) upper = r.upperEnd(r.maximum(upper, result.upper));
+    else {
+      const trouble = result.trouble === undefined ? null : n.toBall(result.trouble);
+      return { upper: null, lower: n.toBall(lower) ?? real.ZERO, steps, ...(trouble ? { place: build.number(real.lower(trouble)) } : {}), method: [...methods].join(' and ') };
+    }
+  }
+  const [u, l] = [n.toBall(upper), n.toBall(lower)];
+  return u === null || l === null ? null : { upper: u, lower: l, steps, method: [...methods].join(' and ') };
+}
+
+function wholeTask<T>(segment: Segment, sum: Expression, n: Numbers<T>): PieceTask<T> | null {
+  if (segment.lower === null || segment.upper === null) return null;
+  const [x0, x1] = [n.value(segment.lower), n.value(segment.upper)];
+  return x0 === null || x1 === null ? null : { x0, x1, expansion: segment.expansion, sum, touches: 'upper' };
+}
+
+interface Near<T> {
+  readonly kind: 'bounded';
+  readonly upper: T;
+  readonly lower: T;
+  readonly steps: (show: (x: T) => string) => readonly string[];
+  readonly rest: PieceTask<T> | null;
+}
+interface Unbounded {
+  readonly kind: 'unbounded';
+  readonly place: Expression;
+  readonly steps: readonly string[];
+}
+
+/** The segment that starts at the point of expansion: the whole of it by the local model, or a part of it with the rest left to pieces. */
+function atPoint<T>(segment: Segment, n: Numbers<T>, problem: BoundProblem, variable: string, lower: T, check: () => void): Near<T> | Unbounded | null {
+  const { r } = n;
+  const base = denominatorOf(segment.expansion);
+  if (base === null) return null;
+  const order = segment.expansion.remainder?.power;
+  const count = Math.max(2, segment.expansion.terms.length);
+  void order;
+  let settledLower = lower;
+  for (let cut = 0; cut < 24; cut += 1) {
+    const part = cutSegment(segment, cut);
+    for (const factor of [1, 2, 3]) {
+      const q = base * factor;
+      let length = neededLength(segment.expansion, q, count) + EXTRA;
+      for (let attempt = 0; attempt < 3; attempt += 1) {
+        check();
+        const local = localModel(part.near, null, n, variable, length, q, check);
+        if (local === null) break;
+        const remainder = remainderAtPoint(local, segment.expansion, n);
+        if (remainder === null) {
+          length += EXTRA;
+          continue;
+        }
+        const g = problem.measure === 'absolute' ? remainder : local.m.divide(remainder, local.f);
+        if (g === null) break;
+        if (g.valuation < 0) {
+          const lead = g.coefficients[0];
+          if (lead === undefined || r.containsZero(lead)) {
+            length += EXTRA;
+            continue;
+          }
+          const place = pointExpression(segment);
+          return { kind: 'unbounded', place, steps: ['The remainder has a pole at the point of expansion: the sum does not contain every term with a negative power.'] };
+        }
+        const result = supremumOfModel(r, g, { from: local.from, to: local.to, floor: settledLower, slack: SLACK / 4, check });
+        settledLower = r.lowerEnd(r.maximum(settledLower, result.lower));
+        const limit = r.multiply(settledLower, r.fromRational({ num: BigInt(Math.round(SETTLED * 2 ** 30) - 2 ** 19), den: 1n << 30n }));
+        const good = !r.isPositive(r.subtract(result.upper, limit));
+        if (!good && attempt < 2 && tailMatters(r, result)) {
+          length += EXTRA;
+          continue;
+        }
+        if (!good && cut < 10) break;
+        return {
+          kind: 'bounded',
+          upper: result.upper,
+          lower: settledLower,
+          rest: part.rest === null ? null : wholeTask(part.rest, sumOf(segment.expansion), n),
+          steps: (show) => describeLocal(local, g.valuation, result.upper, result.tail, n, show, cut),
+        };
+      }
+    }
+  }
+  return null;
+}
+
+function tailMatters<T>(r: Numbers<T>['r'], result: { readonly upper: T; readonly tail: T }): boolean {
+  return r.isPositive(r.subtract(r.multiply(result.tail, r.fromInteger(20_000)), result.upper));
+}
+
+function describeLocal<T>(local: Local<T>, order: number, upper: T, tail: T, n: Numbers<T>, show: (x: T) => string, cut: number): readonly string[] {
+  const power = local.denominator === 1 ? 't' : `t^(1/${local.denominator})`;
+  return [
+    `With s = ${power}/h, t <= ${show(local.scale)}${cut > 0 ? ' (the part next to the point)' : ''}: f - sum = s^${order} (r_0 + r_1 s + ... ), ${local.m.length} coefficients enclosed with ${n.precision} bits.`,
+    `The rest of that series is at most ${show(tail)} in absolute value for all 0 <= s <= 1 (residual of the truncated series in the differential equations of the functions); the whole is at most ${show(upper)}.`,
+  ];
+}
+
+const pointExpression = (segment: Segment): Expression => {
+  const point = segment.expansion.point;
+  if (point === 'inf') return build.constant('infinity');
+  return point === '-inf' ? build.negation(build.constant('infinity')) : point;
+};
+
+/** Coefficients needed to reach past the remainder's order from the leading power. */
+function neededLength(expansion: Expansion, q: number, count: number): number {
+  const powers = expansion.terms.map((t) => t.power).concat(expansion.remainder?.power ?? []);
+  let [low, high] = [0, 0];
+  for (const power of powers) {
+    if (power.kind !== 'number' && !(power.kind === 'negation' && power.operand.kind === 'number')) continue;
+    const value = power.kind === 'number' ? Q.toDouble(power.value) : power.operand.kind === 'number' ? -Q.toDouble(power.operand.value) : 0;
+    low = Math.min(low, value);
+    high = Math.max(high, value);
+  }
+  return Math.max(count, Math.ceil((high - low) * q) + 1);
+}
+
+/** The first 2^-cut of the segment from its local end, and what is left of it. */
+function cutSegment(segment: Segment, cut: number): { readonly near: Segment; readonly rest: Segment | null } {
+  if (cut === 0) return { near: segment, rest: null };
+  const factor = build.number(1n << BigInt(cut));
+  const [lower, upper] = [segment.lower, segment.upper];
+  const infinite = segment.expansion.point === 'inf' || segment.expansion.point === '-inf';
+  if (segment.local === 'upper' && (upper === null || infinite)) {
+    const middle = build.product(lower ?? build.number(1), factor);
+    return { near: { ...segment, lower: middle }, rest: { ...segment, upper: middle, local: 'none', atPoint: false } };
+  }
+  if (segment.local === 'lower' && (lower === null || infinite)) {
+    const middle = build.product(upper ?? build.number(-1), factor);
+    return { near: { ...segment, upper: middle }, rest: { ...segment, lower: middle, local: 'none', atPoint: false } };
+  }
+  const [a, b] = [lower ?? build.number(0), upper ?? build.number(0)];
+  const part = build.quotient(build.difference(b, a), factor);
+  const middle = segment.local === 'lower' ? build.sum(a, part) : build.difference(b, part);
+  return segment.local === 'lower'
+    ? { near: { ...segment, upper: middle }, rest: { ...segment, lower: middle, local: 'none', atPoint: false } }
+    : { near: { ...segment, lower: middle }, rest: { ...segment, upper: middle, local: 'none', atPoint: false } };
+}
+
+/** An infinite end that is not the point of expansion: f and the sum by models in 1/x. */
+function atInfinity<T>(segment: Segment, sum: Expression, n: Numbers<T>, problem: BoundProblem, variable: string, lower: T, check: () => void): Near<T> | Unbounded | null {
+  const { r } = n;
+  for (let cut = 0; cut < 10; cut += 1) {
+    const part = cutSegment(segment, cut);
+    for (const q of [1, 2, 3]) {
+      const local = localModel(part.near, null, n, variable, 30, q, check);
+      if (local === null) continue;
+      const leafStart = part.near.local === 'upper' ? part.near.lower : part.near.upper;
+      const start = leafStart && n.value(leafStart);
+      const s = start && modelOf(sum, n, local.m, variable, local.m.polynomial([start], -q), undefined, check);
+      if (!s) continue;
+      const difference = local.m.subtract(local.f, s);
+      const g = problem.measure === 'absolute' ? difference : local.m.divide(difference, local.f);
+      if (g === null) continue;
+      if (g.valuation < 0) {
+        const lead = g.coefficients[0];
+        if (lead === undefined || r.containsZero(lead)) continue;
+        const infinity = build.constant('infinity');
+        return { kind: 'unbounded', place: segment.upper === null ? infinity : build.negation(infinity), steps: ['f - sum grows without bound at the infinite end of the interval.'] };
+      }
+      const result = supremumOfModel(r, g, { from: local.from, to: local.to, floor: lower, slack: SLACK / 4, check });
+      return {
+        kind: 'bounded',
+        upper: result.upper,
+        lower: result.lower,
+        rest: part.rest === null ? null : wholeTask(part.rest, sum, n),
+        steps: (show) => [`At the infinite end, in 1/x: at most ${show(result.upper)}.`],
+      };
+    }
+  }
+  return null;
+}

@@ -1,7 +1,7 @@
 /** Calls of known functions: elementary ones by their own series, others by what their description says. */
 import type { Element } from '../algebra/types.ts';
 import { build, type CallNode, type Expression, Q } from '../expression/index.ts';
-import { describe, type FunctionDescription } from '../functions/index.ts';
+import { acceptsArity, describe, type FunctionDescription } from '../functions/index.ts';
 import { Declined } from '../outcome.ts';
 import {
   add, compareEventually, divide, eventualSign, exactOf, exponential, growth, hyperbolic, inverse, type InverseFunction, logarithm, type Multi, negate, power,
@@ -18,6 +18,7 @@ export function evaluateCall(s: Session, e: CallNode, evaluate: Evaluate): Multi
   const description = describe(e.function);
   const direct = elementary[e.function];
   const [first] = args;
+  if (description && !acceptsArity(description, args.length)) throw new Declined('bad-request', `${description.title} does not take ${args.length} argument${args.length === 1 ? '' : 's'}; correct the call.`);
   if (args.every((a) => !(a instanceof Series))) return c.field.call(e.function, args as readonly Element[]);
   if (direct && first !== undefined && args.length === 1) return remembered(s, e.function, first, () => direct(s, first));
   const several = compound[e.function];

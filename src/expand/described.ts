@@ -1,17 +1,19 @@
 /** A function by its description: local form at singular places and infinity, differential equation or derivative at regular points. */
 import type { Element } from '../algebra/types.ts';
-import { build, type Expression } from '../expression/index.ts';
+import { build, type Expression, type Rational } from '../expression/index.ts';
 import type { FormalSeries, FunctionDescription, LocalForm, Place } from '../functions/index.ts';
 import { Declined } from '../outcome.ts';
-import { alongDerivative, compose, eventualSign, exactOf, growth, leading, type Multi, Series, split, withExact } from '../series/index.ts';
+import { alongDerivative, compose, type Context, eventualSign, exactOf, finiteStream, growth, leading, type Multi, Series, split, withExact } from '../series/index.ts';
 import type { Evaluate } from './calls.ts';
 import { bind, freshSymbol, type Session } from './session.ts';
+import { aroundSlowPart } from './slow-part.ts';
 import { taylorFromEquation } from './equation.ts';
 
 export function evaluateDescribed(s: Session, d: FunctionDescription, args: readonly Multi[], evaluate: Evaluate): Multi {
   const c = s.context;
   const index = args.findIndex((a) => a instanceof Series);
   const argument = args[index];
+  if (index < 0) return c.field.call(d.id, args as readonly Element[]);
   if (!(argument instanceof Series) || args.some((a, k) => k !== index && a instanceof Series)) {
     throw new Declined('no-expansion', `${title(d)} is expanded in one of its arguments at a time; keep the others constant.`);
   }
@@ -21,9 +23,18 @@ export function evaluateDescribed(s: Session, d: FunctionDescription, args: read
   const found = known.get(key);
   if (found !== undefined) return found;
   const remember = (value: Multi): void => void known.set(key, value);
-  const value = withExact(inOneArgument(s, d, args, index, argument, evaluate, remember), () => build.call(d.id, ...args.map((a) => exactOf(c, a))));
+  const value = named(c, inOneArgument(s, d, args, index, argument, evaluate, remember), () => build.call(d.id, ...args.map((a) => exactOf(c, a))));
   remember(value);
   return value;
+}
+
+/** Gives a result its tree; where it is one power of a scale element, the coefficient too, so that it can cancel exactly. */
+function named(c: Context, m: Multi, exact: () => Expression): Multi {
+  if (!(m instanceof Series) || m.element.kind !== 'exponential') return withExact(m, exact);
+  const first = m.stream.at(0);
+  if (!first || first.order || m.stream.at(1) !== null || !(first.coefficient instanceof Series)) return withExact(m, exact);
+  const coefficient = withExact(first.coefficient, () => build.product(exact(), build.power(m.element.expression, build.negation(exactOf(c, first.exponent)))));
+  return new Series(m.element, finiteStream([{ exponent: first.exponent, coefficient }]), exact);
 }
 
 const title = (d: FunctionDescription): string => d.title.charAt(0).toUpperCase() + d.title.slice(1);
@@ -35,6 +46,15 @@ function inOneArgument(s: Session, d: FunctionDescription, args: readonly Multi[
   const trees = args.map((a, k) => (k === index ? z : exactOf(c, a)));
   if (large) {
     const sign = eventualSign(c, large);
+    const slope = fasterPart(f, large) ? (d.derivative?.(trees, index) ?? null) : null;
+    if (slope) {
+      return aroundSlowPart(
+        c,
+        f,
+        (base) => evaluateDescribed(s, d, args.map((a, k) => (k === index ? base : a)), evaluate),
+        (base) => evaluate(bind(s, [[(z as { name: string }).name, base]]), slope),
+      );
+    }
     if (sign === 'complex' || sign === 0) throw new Declined('no-expansion', `${title(d)} is not expanded towards complex infinity; use a real direction.`);
     const form = d.local?.(trees, index, { kind: 'infinite', argument: z, direction: sign });
     if (form) return evaluateForm(bind(s, [[z.kind === 'symbol' ? z.name : '', f]]), form, evaluate);
@@ -71,6 +91,11 @@ function inOneArgument(s: Session, d: FunctionDescription, args: readonly Multi[
   );
 }
 
+/** Whether f moves on a faster scale element than its unbounded part. */
+function fasterPart(f: Series, large: Multi): boolean {
+  return !(large instanceof Series) || f.element.rank > large.element.rank;
+}
+
 /** Evaluates a local form: its formal series become series of their arguments, then its body. */
 export function evaluateForm(s: Session, form: LocalForm, evaluate: Evaluate): Multi {
   const c = s.context;
@@ -92,8 +117,8 @@ export function evaluateFormal(s: Session, formal: FormalSeries, evaluate: Evalu
   const coefficient = (k: number): Element | null => {
     if (formal.length !== undefined && k >= formal.length) return null;
     const known = coefficients[k];
-    if (known) return known;
-    const raw: Expression | { num: bigint; den: bigint } = formal.coefficient(k);
+    if (known !== undefined) return known;
+    const raw: Expression | Rational = formal.coefficient(k);
     return (coefficients[k] = 'kind' in raw ? c.field.fromExpression(raw) : raw);
   };
   return compose(c, coefficient, argument);

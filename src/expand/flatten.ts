@@ -2,7 +2,7 @@
 import type { Element } from '../algebra/types.ts';
 import { build, type Expression, Q } from '../expression/index.ts';
 import { Declined } from '../outcome.ts';
-import { addElements, type Context, exactOf, isOscillating, isRational, isZero, type Multi, negateElement, nextTerm, nextTermOrOrder, type ScaleElement, Series } from '../series/index.ts';
+import { addElements, type Context, exactOf, isOscillating, isRational, type Multi, negateElement, nextTerm, nextTermOrOrder, plainText, type ScaleElement, Series } from '../series/index.ts';
 
 /** One monomial: coefficient * t^power * L^log * product of element^exponent * oscillation. With `order` only its size is known. */
 export interface RawTerm {
@@ -20,11 +20,11 @@ type Factor = RawTerm['factors'][number];
 
 export function* rawTerms(c: Context, m: Multi, outer: readonly Factor[] = []): Generator<RawTerm> {
   if (!(m instanceof Series)) {
-    if (!isZero(c, m)) yield* constantTerms(c, m, outer);
+    if (!isCertainlyZero(c, m)) yield* constantTerms(c, m, outer);
     return;
   }
   for (let k = 0; ; k += 1) {
-    const lead = nextTermOrOrder(c, m, k);
+    const lead = nextTermOrOrder(c, m, k, true);
     if (!lead) return;
     k = lead.index;
     const factors = [...outer, { element: m.element, exponent: lead.exponent }];
@@ -39,6 +39,14 @@ export function* rawTerms(c: Context, m: Multi, outer: readonly Factor[] = []): 
     }
     if (truncated) return;
   }
+}
+
+/** A constant that could not be compared with zero is shown as a term, with what was taken for granted. */
+function isCertainlyZero(c: Context, e: Element): boolean {
+  if (isRational(e)) return e.num === 0n;
+  const truth = c.field.isZero(e);
+  if (truth === 'undecided') c.notes.assumptions.add(`${plainText(c.field.toExpression(e))} != 0`);
+  return truth === 'yes';
 }
 
 function* constantTerms(c: Context, e: Element, outer: readonly Factor[]): Generator<RawTerm> {

@@ -2,9 +2,11 @@
 import type { Element } from '../algebra/types.ts';
 import { build, Q } from '../expression/index.ts';
 import { exponential, levels, reciprocal, requireOscillation, withExact } from './exponential.ts';
-import { type Context, exactOf, type Multi, Series, Stream, unnamed } from './multi.ts';
-import { add, multiply, scaleBy, streamIn, subtract } from './ring.ts';
+import { leading } from './leading.ts';
+import { type Context, exactOf, type Multi, type ScaleElement, Series, Stream, unnamed } from './multi.ts';
+import { add, multiply, ringOf, scaleBy, streamIn, subtract } from './ring.ts';
 import { split } from './split.ts';
+import { sumOfStreams } from './stream.ts';
 import { composeTail, integralTail, sineCosineTail } from './tail.ts';
 
 export interface SineCosine {
@@ -102,6 +104,16 @@ export function compose(c: Context, coefficient: (k: number) => Multi | null, f:
     return memo[j] as Multi | null;
   };
   return new Series(f.element, composeTail(c, shifted, rest), unnamed);
+}
+
+/** The sum of infinitely many multiseries whose leading exponents in the element increase without bound. */
+export function sumOfSeries(c: Context, element: ScaleElement, part: (k: number) => Multi): Multi {
+  const stream = sumOfStreams(c, ringOf(c), (k) => {
+    const value = part(k);
+    const first = value instanceof Series && value.element === element ? leading(c, value) : null;
+    return { lead: first?.exponent ?? Q.ZERO, stream: streamIn(value, element) };
+  });
+  return new Series(element, stream, unnamed);
 }
 
 function binomial(n: number, k: number): bigint {

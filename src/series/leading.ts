@@ -35,15 +35,18 @@ function hidesLead(c: Context, m: Multi): boolean {
 }
 
 /** Zero for certain; an O-term counts as present. */
-const isAbsent = (c: Context, m: Multi): boolean => (m instanceof Series ? nextTermOrOrder(c, m, 0) === null : isZero(c, m));
+function isAbsent(c: Context, m: Multi, mayVanish: boolean): boolean {
+  if (m instanceof Series) return nextTermOrOrder(c, m, 0, mayVanish) === null;
+  return mayVanish && !isRational(m) ? c.field.isZero(m) === 'yes' : isZero(c, m);
+}
 
 /** The first term at or after index that is not zero or is an O-term (`order`); null where the rest is zero. */
-export function nextTermOrOrder(c: Context, s: Series, from: number): (Lead & { readonly order: boolean }) | null {
+export function nextTermOrOrder(c: Context, s: Series, from: number, mayVanish = false): (Lead & { readonly order: boolean }) | null {
   let verdict: Truth | null = null;
   for (let k = from; ; k += 1) {
     const term = s.stream.at(k);
     if (!term) return null;
-    if (term.order || !isAbsent(c, term.coefficient)) return { index: k, exponent: term.exponent, coefficient: term.coefficient, order: term.order === true };
+    if (term.order || !isAbsent(c, term.coefficient, mayVanish)) return { index: k, exponent: term.exponent, coefficient: term.coefficient, order: term.order === true };
     const seen = k - from;
     if (seen === c.patience.value) {
       verdict = restVanishes(c, s, from);

@@ -17,6 +17,45 @@ export const dropTerms = (s: Stream, count: number): Stream => new Stream((k) =>
 export const takeTerms = (s: Stream, count: number): Stream => new Stream((k) => (k < count ? s.at(k) : null));
 export const prepend = (first: Term, rest: Stream): Stream => new Stream((k) => (k === 0 ? first : rest.at(k - 1)));
 
+/**
+ * The sum of infinitely many streams whose first exponents increase without bound; `part(k)` is null behind the last one.
+ * `lead(k)` is a lower bound of the k-th first exponent.
+ */
+export function sumOfStreams(c: Context, ring: CoefficientRing, part: (k: number) => { readonly lead: Element; readonly stream: Stream } | null): Stream {
+  const active: { readonly stream: Stream; index: number }[] = [];
+  let opened = 0;
+  let upcoming = part(0);
+  return new Stream(() => {
+    c.budget.check();
+    for (;;) {
+      let least: Element | null = null;
+      for (const a of active) {
+        const term = a.stream.at(a.index);
+        if (term && (least === null || compareExponents(c, term.exponent, least) < 0)) least = term.exponent;
+      }
+      if (upcoming && (least === null || compareExponents(c, upcoming.lead, least) <= 0)) {
+        active.push({ stream: upcoming.stream, index: 0 });
+        opened += 1;
+        upcoming = part(opened);
+        continue;
+      }
+      if (least === null) return null;
+      let total: Multi = Q.ZERO;
+      let order = false;
+      for (const a of active) {
+        const term = a.stream.at(a.index);
+        if (!term || compareExponents(c, term.exponent, least) !== 0) continue;
+        a.index += 1;
+        if (term.order || order) {
+          total = isLiteralZero(total) ? term.coefficient : ring.envelope(total, term.coefficient);
+          order = true;
+        } else total = ring.add(total, term.coefficient);
+      }
+      return order ? { exponent: least, coefficient: total, order: true } : { exponent: least, coefficient: total };
+    }
+  });
+}
+
 /** How coefficients are combined; given by the ring of multiseries, which is built on streams. */
 export interface CoefficientRing {
   add(a: Multi, b: Multi): Multi;

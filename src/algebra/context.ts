@@ -17,6 +17,8 @@ export interface Context {
   readonly isZero: (a: Element) => Truth;
   /** A tree as an element. */
   readonly read: (e: Expression) => Element;
+  /** Results of calls so far, by key. */
+  readonly calls: Map<string, Element>;
   readonly call: (id: string, args: readonly Element[]) => Element;
   /** Sign of an element without parameters by balls; null where it stays open or is not real. */
   readonly signOfNumber: (a: Element) => -1 | 1 | null;

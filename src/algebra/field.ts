@@ -3,6 +3,7 @@ import { Q, type Assumption, type Expression, type Rational } from '../expressio
 import { describe as describeFunction, type FunctionDescription } from '../functions/index.ts';
 import type { Budget } from '../outcome.ts';
 import { createAssumptionStore } from './assumptions.ts';
+import { signOfCall } from './callSigns.ts';
 import { imaginaryKernel, kernelElement, minus, rationalOf, type Context } from './context.ts';
 import { deepZero } from './deepZero.ts';
 import { callFunction } from './functions.ts';
@@ -10,12 +11,12 @@ import { fromExpression } from './fromExpression.ts';
 import { createKernelTable, type Kernel } from './kernel.ts';
 import { divideElements, exponential, generalPower, logarithm } from './powers.ts';
 import { polynomialKey, type Polynomial } from './polynomial.ts';
-import { addElements, elementFromPolynomial, elementKey, isQuotient, kernelsOf, multiplyElements, negateElement } from './quotient.ts';
+import { addElements, allKernels, elementFromPolynomial, elementKey, isQuotient, kernelsOf, multiplyElements, negateElement } from './quotient.ts';
 import { createSignRules, isRealSet, NEGATIVE, NIL, NOT_REAL, POSITIVE, REAL, ANY, type SignSet } from './signs.ts';
 import { byImaginaryUnit } from './split.ts';
 import { toExpression } from './toExpression.ts';
 import type { Element, Field, Sign, Truth } from './types.ts';
-import { allKernels, createZeroTest, signOfBall } from './zero.ts';
+import { createZeroTest, signOfBall } from './zero.ts';
 import { complex } from '../rigorous/index.ts';
 
 const SIGN_PRECISIONS = [64, 192, 640, 2000] as const;
@@ -28,7 +29,7 @@ export function createField(assumptions: readonly Assumption[], budget: Budget, 
   const table = createKernelTable(() => budget.check());
   const facts = createAssumptionStore(table);
   const needed = new Set<string>();
-  const zero = createZeroTest(table, describe, facts, (a) => deepZero(ctx, a));
+  const zero = createZeroTest(table, describe, facts, (k) => signs.ofKernel(k), (a) => deepZero(ctx, a));
   const signs = createSignRules(table, facts, (k) => signOfOpaque(k), (f) => signOfSum(f));
   const sums = new Map<string, SignSet>();
   const ctx: Context = {
@@ -39,6 +40,7 @@ export function createField(assumptions: readonly Assumption[], budget: Budget, 
     isZero: (a) => zero.isZero(a),
     isInteger: (name) => facts.isInteger(name),
     read: (e) => fromExpression(ctx, e),
+    calls: new Map(),
     call: (id, args) => callFunction(ctx, id, args),
     signOfNumber(a) {
       const s = constantSign(a);
@@ -49,7 +51,8 @@ export function createField(assumptions: readonly Assumption[], budget: Budget, 
   /** log and call kernels: by balls where they are constants, by their arguments' signs where a rule is known. */
   function signOfOpaque(k: Kernel): SignSet {
     const a = kernelElement(ctx, k);
-    if (isConstant(a)) return constantSign(a);
+    const byBall = isConstant(a) ? constantSign(a) : ANY;
+    if (byBall !== ANY) return byBall;
     const { shape } = k;
     if (shape.kind === 'log') {
       const inner = signs.of(shape.argument);
@@ -57,13 +60,7 @@ export function createField(assumptions: readonly Assumption[], budget: Budget, 
       const above = signs.of(minus(ctx, shape.argument, Q.ONE));
       return isRealSet(above) ? above : REAL;
     }
-    if (shape.kind === 'call' && shape.args.every((x) => isRealSet(signs.of(x)))) {
-      const [x] = shape.args;
-      if (!x) return ANY;
-      if (REAL_EVERYWHERE.has(shape.id)) return SIGN_OF_ARGUMENT.has(shape.id) ? signs.of(x) : shape.id === 'cosh' ? POSITIVE : REAL;
-      if ((shape.id === 'gamma' || shape.id === 'besselI' || shape.id === 'besselK') && shape.args.every((y) => signs.of(y) === POSITIVE)) return POSITIVE;
-    }
-    return ANY;
+    return shape.kind === 'call' ? signOfCall(shape.id, shape.args, signs) : ANY;
   }
 
   const isConstant = (a: Element): boolean => ![...allKernels(table, a)].some((k) => (table.kernels[k] as Kernel).shape.kind === 'parameter');
@@ -166,8 +163,8 @@ export function createField(assumptions: readonly Assumption[], budget: Budget, 
 
   for (const a of assumptions) if (a.kind === 'domain') facts.setDomain(a.symbol, a.domain);
   for (const a of assumptions) if (a.kind === 'relation') facts.note(field.subtract(field.fromExpression(a.left), field.fromExpression(a.right)), a.relation);
+  signs.reset();
+  sums.clear();
+  ctx.calls.clear();
   return field;
 }
-
-const REAL_EVERYWHERE: ReadonlySet<string> = new Set(['sin', 'cos', 'sinh', 'cosh', 'asinh', 'atan', 'erf', 'erfc']);
-const SIGN_OF_ARGUMENT: ReadonlySet<string> = new Set(['sinh', 'asinh', 'atan', 'erf']);

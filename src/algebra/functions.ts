@@ -2,13 +2,23 @@
 import { Declined } from '../outcome.ts';
 import type { Context } from './context.ts';
 import { ELEMENTARY_RULES, opaque } from './elementary.ts';
-import { negateElement, isQuotient } from './quotient.ts';
+import { elementKey, isQuotient, negateElement } from './quotient.ts';
 import { toExpression } from './toExpression.ts';
 import type { Element } from './types.ts';
 
 const isNegativeForm = (a: Element): boolean => (isQuotient(a) ? a.content.num < 0n : a.num < 0n);
 
+/** Values are kept: series code asks for the same ones again and again. */
 export function callFunction(ctx: Context, id: string, args: readonly Element[]): Element {
+  const key = `${id}(${args.map(elementKey).join(', ')})`;
+  const known = ctx.calls.get(key);
+  if (known !== undefined) return known;
+  const result = computeCall(ctx, id, args);
+  ctx.calls.set(key, result);
+  return result;
+}
+
+function computeCall(ctx: Context, id: string, args: readonly Element[]): Element {
   const [first, ...rest] = args;
   if (!first) throw new Declined('bad-request', `The function ${id} needs an argument.`);
   const own = ELEMENTARY_RULES[id];

@@ -71,12 +71,15 @@ export interface SignRules {
   ofMonomial(m: Monomial): SignSet;
   ofPolynomial(f: Polynomial): SignSet;
   of(a: Element): SignSet;
+  /** Forgets what was derived so far, after new facts. */
+  reset(): void;
 }
 
 /** `decide` gives the sign of opaque kernels, `ofNumber` that of a sum without parameters; both may use balls. */
 export function createSignRules(table: KernelTable, facts: SignFacts, decide: (k: Kernel, rules: SignRules) => SignSet, ofNumber: (f: Polynomial) => SignSet): SignRules {
   const known = new Map<number, SignSet>();
   const rules: SignRules = {
+    reset: () => known.clear(),
     ofKernel(k) {
       const hit = known.get(k.index);
       if (hit !== undefined) return hit;

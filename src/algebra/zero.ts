@@ -5,8 +5,9 @@ import { complex, real, type ComplexBall } from '../rigorous/index.ts';
 import type { AssumptionStore } from './assumptions.ts';
 import { createEvaluator, type Evaluator } from './enclosure.ts';
 import type { Kernel, KernelTable } from './kernel.ts';
-import { elementKey, isQuotient, kernelsOf } from './quotient.ts';
-import { NEGATIVE, POSITIVE } from './signs.ts';
+import { allKernels, elementFromPolynomial, elementKey, isQuotient, kernelsOf } from './quotient.ts';
+import { NEGATIVE, POSITIVE, type SignSet } from './signs.ts';
+import { cannotVanish, variesByOneKernel } from './variation.ts';
 import { isOnePolynomial } from './polynomial.ts';
 import type { Element, Truth } from './types.ts';
 
@@ -20,7 +21,16 @@ const PRECISIONS = [64, 128, 320, 800, 2000] as const;
 /** Numerators and denominators of the values that parameters take, spread so that no small relation holds among them. */
 const SAMPLE_COUNT = 3;
 
-export function createZeroTest(table: KernelTable, describe: (id: string) => FunctionDescription | null | undefined, facts: AssumptionStore, deepZero: (a: Element) => boolean): ZeroTest {
+export function createZeroTest(table: KernelTable, describe: (id: string) => FunctionDescription | null | undefined, facts: AssumptionStore, signOf: (k: Kernel) => SignSet, deepZero: (a: Element) => boolean): ZeroTest {
+  const differs = (a: Element): boolean => {
+    const [x, y] = [test.enclose(a, 64, 0), test.enclose(a, 64, 2)];
+    return x !== null && y !== null && !complex.overlaps(x, y);
+  };
+  const neverIdenticallyZero = (k: Kernel): boolean => {
+    if (k.shape.kind !== 'log' && k.shape.kind !== 'call') return true;
+    const s = signOf(k);
+    return s === POSITIVE || s === NEGATIVE || cannotVanish(table, facts, k, differs);
+  };
   const answers = new Map<string, Truth>();
   const evaluators = new Map<string, Evaluator>();
 
@@ -55,6 +65,11 @@ export function createZeroTest(table: KernelTable, describe: (id: string) => Fun
   };
 
   function decide(a: Element): Truth {
+    if (isQuotient(a) && (a.monomial.kernels.length > 0 || a.denominator.length > 0) && !isOnePolynomial(a.numerator) && a.monomial.kernels.every((k) => neverIdenticallyZero(table.kernels[k] as Kernel))) {
+      // Only the sum can vanish.
+      return test.isZero(elementFromPolynomial(table, a.numerator));
+    }
+    if (variesByOneKernel(table, facts, a)) return 'no';
     const parameters = [...allKernels(table, a)].some((k) => (table.kernels[k] as Kernel).shape.kind === 'parameter');
     const samples = parameters ? SAMPLE_COUNT : 1;
     let looksZero = false;
@@ -76,35 +91,6 @@ export function createZeroTest(table: KernelTable, describe: (id: string) => Fun
 /** Parameters, pi, radicals of integers and i are algebraically independent but for their relations, which the normal form applies. */
 const isIndependent = (k: Kernel): boolean =>
   k.shape.kind === 'parameter' || k.shape.kind === 'integer' || k.shape.kind === 'imaginary' || k.shape.kind === 'apply' || (k.shape.kind === 'constant' && k.shape.name === 'pi');
-
-const neverIdenticallyZero = (k: Kernel): boolean => {
-  switch (k.shape.kind) {
-    case 'log':
-    case 'call':
-      return false;
-    default:
-      return true;
-  }
-};
-
-/** Kernels of the element and of all that they are built on. */
-export function allKernels(table: KernelTable, a: Element): ReadonlySet<number> {
-  const found = new Set<number>();
-  const open: Element[] = [a];
-  for (let x = open.pop(); x; x = open.pop()) {
-    for (const k of kernelsOf(x)) {
-      if (found.has(k)) continue;
-      found.add(k);
-      const { shape } = table.kernels[k] as Kernel;
-      if (shape.kind === 'radicand') open.push(shape.base);
-      else if (shape.kind === 'exp') open.push(shape.unit);
-      else if (shape.kind === 'power') open.push(shape.base, shape.unit);
-      else if (shape.kind === 'log' || shape.kind === 'abs') open.push(shape.argument);
-      else if (shape.kind === 'call' || shape.kind === 'apply') open.push(...shape.args);
-    }
-  }
-  return found;
-}
 
 /** A value of the parameter that its own assumptions allow; different for every name and sample. */
 function sampleOf(facts: AssumptionStore, name: string, sample: number): Rational | { readonly re: Rational; readonly im: Rational } {

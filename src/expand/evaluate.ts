@@ -6,6 +6,7 @@ import {
   Series, theta,
 } from '../series/index.ts';
 import { evaluateCall } from './calls.ts';
+import { evaluateIntegral } from './integral.ts';
 import type { Session } from './session.ts';
 
 const DEEPEST = 600;
@@ -65,6 +66,8 @@ function byKind(s: Session, e: Expression): Multi {
       return orderTerm(s, e.argument, e.little);
     case 'derivative':
       return evaluateDerivative(s, e);
+    case 'integral':
+      return evaluateIntegral(s, e, evaluate);
     default:
       throw new Declined('no-expansion', notExpanded[e.kind] ?? 'This kind of formula is not expanded; rewrite it with sums, products, powers and functions.');
   }

@@ -32,7 +32,7 @@ function logarithmicSpeed(c: Context, element: ScaleElement): Multi {
  * theta(f) / (l_1 ... l_(depth-1)) for f in iterated logarithms of depth at least `depth`, with l_d = 1/log(...(1/t)):
  * theta l_d = l_1 ... l_d * l_d.
  */
-function byLogarithm(c: Context, f: Multi, depth: number): Multi {
+export function byLogarithm(c: Context, f: Multi, depth: number): Multi {
   if (!(f instanceof Series) || isLiteralZero(f)) return theta(c, f);
   if (f.element.kind !== 'logarithm') throw new Declined('no-expansion', 'The derivative on this mixed scale is not expanded; differentiate the formula first.');
   const own = f.element.depth;

@@ -80,7 +80,7 @@ function integerPower(c: Context, f: Multi, n: number): Multi {
 }
 
 /** Whether f is known to have at most a few terms on every level, so that products of it end. */
-function isShort(f: Multi, most = 12): boolean {
+export function isShort(f: Multi, most = 12): boolean {
   if (!(f instanceof Series)) return true;
   for (let k = 0; k <= most; k += 1) {
     const term = f.stream.at(k);

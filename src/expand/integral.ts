@@ -1,0 +1,78 @@
+/** Integral nodes whose limits move: the derivative in t is integrated term by term, and the constant is fixed by the limits. */
+import { children, type Expression, type IntegralNode, Q } from '../expression/index.ts';
+import { Declined } from '../outcome.ts';
+import { eventualSign, exactOf, growth, integrate, isZero, type Multi, multiply, Series, split, subtract, theta, withExact } from '../series/index.ts';
+import type { Evaluate } from './calls.ts';
+import { bind, type Session } from './session.ts';
+
+export function evaluateIntegral(s: Session, e: IntegralNode, evaluate: Evaluate): Multi {
+  const { context: c } = s;
+  if (e.variable.kind !== 'symbol') throw new Declined('bad-request', 'An integral runs over one symbol; replace the integration variable by one.');
+  const { name } = e.variable;
+  if (!e.lower && !e.upper) {
+    const own = s.bindings.get(name);
+    if (own === undefined) throw new Declined('no-expansion', 'An antiderivative in a parameter is not expanded; give the integral its limits.');
+    const result = integrate(c, multiply(c, evaluate(s, e.body), theta(c, own)));
+    if (growth(c, own) === 'small') return result;
+    throw new Declined('no-expansion', 'The constant of the antiderivative is not known at this point; give the integral its limits.');
+  }
+  if (!e.lower || !e.upper) throw new Declined('bad-request', 'The integral has one limit only; write both.');
+  if (dependsOnBound(s, e.body, name)) throw new Declined('no-expansion', 'An integral whose integrand contains the variable is not expanded here; integrate first.');
+  const upper = endOf(s, e.upper, evaluate);
+  const lower = endOf(s, e.lower, evaluate);
+  const above = upper.moving === null ? Q.ZERO : primitiveAt(s, e, name, upper.moving, evaluate);
+  const below = lower.moving === null ? Q.ZERO : primitiveAt(s, e, name, lower.moving, evaluate);
+  const total = subtract(c, above, below);
+  if (!sameLimit(s, upper, lower)) throw new Declined('no-expansion', 'The constant of this integral is not known in closed form; let its limits tend to the same place.');
+  // Each primitive has no constant in t: it is the one that vanishes at the common limit only if it tends to zero.
+  const settled = [above, below].every((m) => growth(c, m) === 'small' || growth(c, m) === 'zero');
+  if (!settled) {
+    const one = upper.moving === null || lower.moving === null;
+    throw new Declined('no-expansion', one ? 'The integral diverges at the point; correct its limits.' : 'The constant of this integral between two moving limits is not known; split it.');
+  }
+  return withExact(total, () => ({ ...e, lower: limitTree(s, lower, e.lower as Expression), upper: limitTree(s, upper, e.upper as Expression) }));
+}
+
+interface End {
+  /** Null for a constant end. */
+  readonly moving: Series | null;
+  /** The limit; null for infinity. */
+  readonly limit: Multi | null;
+  readonly sign: -1 | 0 | 1;
+}
+
+function endOf(s: Session, e: Expression, evaluate: Evaluate): End {
+  const c = s.context;
+  const infinite = infinityOf(e);
+  if (infinite !== 0) return { moving: null, limit: null, sign: infinite };
+  const value = evaluate(s, e);
+  if (!(value instanceof Series)) return { moving: null, limit: value, sign: 0 };
+  const { large, constant } = split(c, value);
+  if (!large) return { moving: value, limit: constant, sign: 0 };
+  return { moving: value, limit: null, sign: eventualSign(c, large) === -1 ? -1 : 1 };
+}
+
+export function infinityOf(e: Expression): -1 | 0 | 1 {
+  if (e.kind === 'constant' && e.name === 'infinity') return 1;
+  if (e.kind === 'negation' && e.operand.kind === 'constant' && e.operand.name === 'infinity') return -1;
+  return 0;
+}
+
+function sameLimit(s: Session, a: End, b: End): boolean {
+  if (a.limit === null || b.limit === null) return a.limit === b.limit && a.sign === b.sign;
+  return isZero(s.context, subtract(s.context, a.limit, b.limit));
+}
+
+/** The antiderivative of the integrand along a moving end. */
+function primitiveAt(s: Session, e: IntegralNode, name: string, end: Series, evaluate: Evaluate): Multi {
+  const value = evaluate(bind(s, [[name, end]]), e.body);
+  return integrate(s.context, multiply(s.context, value, theta(s.context, end)));
+}
+
+const limitTree = (s: Session, end: End, written: Expression): Expression => (end.moving ? exactOf(s.context, end.moving) : written);
+
+/** Whether a symbol that varies, other than the integration variable, occurs in the tree. */
+export function dependsOnBound(s: Session, e: Expression, except: string): boolean {
+  if (e.kind === 'symbol') return e.name !== except && s.bindings.has(e.name);
+  return children(e).some((child) => dependsOnBound(s, child, except));
+}

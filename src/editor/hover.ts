@@ -28,7 +28,7 @@ export function registerHover(services: Services): vscode.Disposable {
       const consulting = services.consultant.consult(document, place, ['reading', 'reach'], {}, token);
       const consultation = await Promise.race([consulting, after(DEADLINE_MS, null)]);
       if (token.isCancellationRequested) return null;
-      if (!consultation) return new vscode.Hover(stillComputing(document, place));
+      if (!consultation) return selected || !isCode(engineLanguage(document)) ? new vscode.Hover(stillComputing(document, place)) : null;
       return render(services, document, consultation, selected !== null, settings.hover === 'picture');
     },
   });

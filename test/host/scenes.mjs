@@ -1,0 +1,188 @@
+// Driven scenes: a person at the keyboard of the real web workbench. Each scene gets a page with the demo open and leaves it clean.
+import { readFileSync } from 'node:fs';
+import path from 'node:path';
+import { ROOT } from '../../src/start/workbench.mjs';
+import { chooseFix, closeHover, editorText, expansionFrame, focusEditor, goTo, hoverAtCursor, openFixes, openFromExplorer, pageSays, pause, placeOf, runCommand, select, waitForText } from './driver.mjs';
+
+export const DEMO = path.join(ROOT, 'media/demo');
+const source = (name) => readFileSync(path.join(DEMO, name), 'utf8');
+
+function holds(condition, message) {
+  if (!condition) throw new Error(message);
+}
+
+async function undoTo(page, gone) {
+  await focusEditor(page);
+  await page.keyboard.press('Control+z');
+  await waitForText(page, gone, { absent: true });
+}
+
+const SAG = '\\frac{\\cosh u - 1}{u}';
+
+export const scenes = {
+  'LaTeX: select, read the hover': async (page) => {
+    await openFromExplorer(page, 'sag-note.tex');
+    await select(page, source('sag-note.tex'), SAG);
+    const text = await hoverAtCursor(page, 'u³/24');
+    holds(/u → 0/.test(text), `the limit is missing in ${text}`);
+    holds(/from the note above/.test(text), `the source is missing in ${text}`);
+    holds(/O\(u⁹\)/.test(text), `the order is missing in ${text}`);
+    const picture = page.locator('.monaco-hover img[src^="data:image/svg"]').first();
+    await picture.waitFor({ timeout: 5000 });
+    const shown = await picture.evaluate((img) => img.complete && img.naturalWidth > 50 && img.naturalHeight > 15);
+    holds(shown, 'the picture of the formula is not drawn');
+    await closeHover(page);
+  },
+
+  'LaTeX: the Expansion page says the same': async (page) => {
+    await select(page, source('sag-note.tex'), SAG);
+    await runCommand(page, 'Leading Order: Expand Here');
+    const frame = await expansionFrame(page, '#formula');
+    await pageSays(frame, 'sag-note.tex:16');
+    const label = await frame.evaluate(() => document.getElementById('formula')?.getAttribute('aria-label') ?? '');
+    holds(label.includes('u/2 + u³/24'), `the page reads ${label}`);
+    const values = await frame.evaluate(() => ['variable', 'point', 'from', 'to', 'tolerance'].map((id) => document.getElementById(id)?.value));
+    holds(JSON.stringify(values) === JSON.stringify(['u', '0', '-0.3', '0.3', '1e-6']), `the controls hold ${JSON.stringify(values)}`);
+    holds(await frame.evaluate(() => document.querySelector('#formula .katex') !== null), 'the formula is not typeset');
+  },
+
+  'the page: terms by keyboard, then back': async (page) => {
+    const frame = await expansionFrame(page, '#formula');
+    await frame.locator('#formula').focus();
+    await page.keyboard.press('-');
+    await frame.waitForFunction(() => document.getElementById('terms')?.value === '3', null, { timeout: 15_000 });
+    await page.keyboard.press('+');
+    await frame.waitForFunction(() => document.getElementById('terms')?.value === '4', null, { timeout: 15_000 });
+    holds((await frame.evaluate(() => document.activeElement?.id)) === 'formula', 'the focus was lost');
+  },
+
+  'the page: a tolerance typed, a row of the ladder chosen': async (page) => {
+    const frame = await expansionFrame(page, '#formula');
+    await frame.locator('#tolerance').fill('1e-9');
+    await frame.locator('#tolerance').press('Enter');
+    await pageSays(frame, /terms? keeps? 1e-9/);
+    await frame.locator('button.row').first().click();
+    const first = await frame.locator('button.row').first().innerText();
+    await frame.waitForFunction((wanted) => document.getElementById('terms')?.value === wanted, first.trim(), { timeout: 15_000 });
+  },
+
+  'the page: insert from it, one undo takes it back': async (page) => {
+    const frame = await expansionFrame(page, '#apply-0');
+    await frame.locator('#apply-0').click();
+    await waitForText(page, `${SAG} = `);
+    await undoTo(page, `${SAG} = `);
+  },
+
+  'LaTeX: quick fix inserts, one undo takes it back': async (page) => {
+    await focusEditor(page);
+    await select(page, source('sag-note.tex'), SAG);
+    const titles = await openFixes(page, 'Insert "= u/2');
+    holds(titles.some((title) => title.includes('as next aligned row')), `offered: ${titles.join(' | ')}`);
+    await page.keyboard.press('Escape');
+    await chooseFix(page, 'as next aligned row');
+    await waitForText(page, '&= \\frac{u}{2}');
+    await undoTo(page, '&= \\frac{u}{2}');
+  },
+
+  'LaTeX: a wrong coefficient is underlined and corrected': async (page) => {
+    await focusEditor(page);
+    await page.locator('.squiggly-warning').first().waitFor({ timeout: 30_000 });
+    const at = placeOf(source('sag-note.tex'), '620');
+    await goTo(page, at.line, at.column + 1);
+    await chooseFix(page, 'Correct to');
+    await waitForText(page, '720}');
+    await undoTo(page, '720}');
+  },
+
+  'C: hover, replace by polynomial, undo': async (page) => {
+    await openFromExplorer(page, 'controller.c');
+    await select(page, source('controller.c'), 'sqrt(1.0 + slope * slope)');
+    const text = await hoverAtCursor(page, 'slope²');
+    holds(/slope → 0/.test(text), `the limit is missing in ${text}`);
+    await closeHover(page);
+    await chooseFix(page, 'Replace by polynomial');
+    await waitForText(page, 'return sqrt(1.0 + slope * slope)', { absent: true });
+    await focusEditor(page);
+    await page.keyboard.press('Control+z');
+    await waitForText(page, 'return sqrt(1.0 + slope * slope)');
+  },
+
+  'C: plain arithmetic has no hover': async (page) => {
+    const at = placeOf(source('controller.c'), 'u * u / 6.0');
+    await goTo(page, at.line, at.column + 2);
+    await page.keyboard.press('Control+k');
+    await page.keyboard.press('Control+i');
+    await pause(1500);
+    const shown = await page.locator('.monaco-hover .hover-contents').allInnerTexts();
+    holds(!shown.join(' ').includes('Expansion page'), `there is a hover: ${shown.join(' ')}`);
+    await closeHover(page);
+  },
+
+  'Python: hover, replace by polynomial, undo': async (page) => {
+    await openFromExplorer(page, 'survey.py');
+    await select(page, source('survey.py'), 'np.exp(-t) * np.cos(t)');
+    const text = await hoverAtCursor(page, 't³/3');
+    holds(/1 − t/.test(text), `the expansion is missing in ${text}`);
+    await closeHover(page);
+    await chooseFix(page, 'Replace by polynomial');
+    await waitForText(page, 'np.exp(-t) * np.cos(t)', { absent: true });
+    await focusEditor(page);
+    await page.keyboard.press('Control+z');
+    await waitForText(page, 'np.exp(-t) * np.cos(t)');
+  },
+
+  'the small quantity is asked once and remembered': async (page) => {
+    await openFromExplorer(page, 'field-notes.md');
+    await goTo(page, 1, 1);
+    await runCommand(page, 'Leading Order: Forget Answers for This File');
+    await select(page, source('field-notes.md'), '\\sqrt{1 + q}');
+    await runCommand(page, 'Leading Order: Set Small Quantity');
+    await page.locator('.quick-input-list .monaco-list-row', { hasText: 'q' }).first().waitFor({ timeout: 20_000 });
+    await page.keyboard.press('Enter');
+    await page.locator('.quick-input-title', { hasText: 'tend' }).first().waitFor({ timeout: 20_000 });
+    await page.keyboard.press('Enter');
+    const frame = await expansionFrame(page, '#formula');
+    await pageSays(frame, 'field-notes.md');
+    await focusEditor(page);
+    await select(page, source('field-notes.md'), '\\sqrt{1 + q}');
+    const text = await hoverAtCursor(page, 'q²/8');
+    holds(/remembered for this file/.test(text), `the source is missing in ${text}`);
+    await closeHover(page);
+  },
+
+  'an edit between computing and applying is refused, nothing is lost': async (page) => {
+    await openFromExplorer(page, 'sag-note.tex');
+    await select(page, source('sag-note.tex'), SAG);
+    await runCommand(page, 'Leading Order: Expand Here');
+    const frame = await expansionFrame(page, '#apply-0');
+    await pageSays(frame, 'sag-note.tex:16');
+    await focusEditor(page);
+    const at = placeOf(source('sag-note.tex'), SAG);
+    await goTo(page, at.line, at.column + SAG.length - 1);
+    // The edit and the click come in the same breath, before the page has heard of the edit.
+    await Promise.all([page.keyboard.type('v'), frame.evaluate(() => document.getElementById('apply-0')?.click())]);
+    await waitForText(page, '{uv}');
+    await pause(1200);
+    const text = await editorText(page);
+    holds(text.includes('\\frac{\\cosh u - 1}{uv}'), `the text is damaged: ${text.split('\n').find((line) => line.includes('cosh u - 1'))}`);
+    await undoTo(page, '{uv}');
+  },
+
+  'theme: page and picture follow when it changes': async (page) => {
+    for (const [kind, ink] of [
+      ['vscode-light', '1f1f1f'],
+      ['vscode-dark', 'cccccc'],
+    ]) {
+      await focusEditor(page);
+      await runCommand(page, 'Preferences: Toggle between Light/Dark Themes');
+      const frame = await expansionFrame(page);
+      await frame.waitForFunction((wanted) => document.body.classList.contains(wanted), kind, { timeout: 20_000 });
+      await focusEditor(page);
+      await select(page, source('sag-note.tex'), SAG);
+      await hoverAtCursor(page, 'u³/24');
+      const src = await page.locator('.monaco-hover img[src^="data:image/svg"]').first().getAttribute('src', { timeout: 5000 });
+      holds(decodeURIComponent(src ?? '').includes(`#${ink}`), `the ink is not ${ink} in ${kind}`);
+      await closeHover(page);
+    }
+  },
+};

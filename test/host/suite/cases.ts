@@ -1,0 +1,219 @@
+/** What the extension must do in every host. Results come from the engine; the values are textbook expansions. */
+import * as vscode from 'vscode';
+import type { Api } from '../../../src/editor/activate.ts';
+import { check, fix, fixes, hoverText, open, same, select, until, wait } from './tools.ts';
+
+const ID = 'leading-order.leading-order';
+const LATEX = '% leading-order: small x\n\\[ \\frac{\\sin x}{x} \\]\n';
+
+async function api(): Promise<Api> {
+  const extension = vscode.extensions.getExtension<Api>(ID);
+  check(extension, 'the extension is not installed');
+  return extension.activate();
+}
+
+const COMMANDS = ['expandHere', 'replaceCall', 'guard', 'libraryFunction', 'testHarness', 'checkDocument', 'checkWorkspace', 'copyQuery', 'addNote', 'setSmallQuantity', 'forgetAnswers', 'openBeside', 'showLog'];
+
+export const cases: Readonly<Record<string, () => Promise<void>>> = {
+  'activates quickly and registers its commands': async () => {
+    const { activation } = await api();
+    console.log(`activation ${activation.toFixed(1)} ms`);
+    check(activation < 150, `activation took ${activation} ms; five times the aim of 30 ms is the limit`);
+    const known = await vscode.commands.getCommands(true);
+    same(
+      COMMANDS.filter((name) => !known.includes(`leadingOrder.${name}`)),
+      [],
+      'missing commands',
+    );
+  },
+
+  'hover in LaTeX: variable and its source, Unicode line, picture, links': async () => {
+    const editor = await open('latex', LATEX);
+    const text = await until('a hover', async () => {
+      const found = await hoverText(editor.document, new vscode.Position(1, 8));
+      return found.includes('x²/6') ? found : null;
+    });
+    check(text.includes('x → 0'), `the limit is missing: ${text.slice(0, 300)}`);
+    check(text.includes('from the note above'), `the source is missing: ${text.slice(0, 300)}`);
+    check(text.includes('O\\(x⁸\\)'), `the order is missing: ${text.slice(0, 400)}`);
+    check(text.includes('command:leadingOrder.setSmallQuantity'), 'the change link is missing');
+  },
+
+  'hover picture is one SVG image': async () => {
+    const editor = await open('latex', LATEX);
+    const text = await until('a picture', async () => {
+      const found = await hoverText(editor.document, new vscode.Position(1, 8));
+      return found.includes('data:image/svg+xml,') ? found : null;
+    });
+    const uri = /\((data:image\/svg\+xml,[^)\s]*)\)/.exec(text)?.[1] ?? '';
+    check(uri.length > 500 && uri.length < 90_000, `the picture has ${uri.length} characters`);
+    check(!/foreignObject|<script/i.test(decodeURIComponent(uri)), 'the picture holds more than drawing');
+  },
+
+  'no hover on plain arithmetic in code': async () => {
+    const editor = await open('c', 'int next(int i) { return i + 1; }\n');
+    await wait(200);
+    const text = await hoverText(editor.document, new vscode.Position(0, 26));
+    check(!text.includes('leadingOrder'), `there is a hover: ${text.slice(0, 200)}`);
+  },
+
+  'quick fix in LaTeX inserts the expansion and one undo takes it back': async () => {
+    const editor = await open('latex', LATEX);
+    const range = select(editor, '\\frac{\\sin x}{x}');
+    const action = await fix(editor.document, range, 'Insert "= 1 − x²/6');
+    check(action.edit, 'the action carries no edit after it was resolved');
+    await vscode.workspace.applyEdit(action.edit);
+    check(editor.document.getText().includes('\\frac{\\sin x}{x} = 1 - \\frac{x^2}{6}'), `the text is ${editor.document.getText()}`);
+    await vscode.commands.executeCommand('undo');
+    same(editor.document.getText(), LATEX, 'after one undo');
+  },
+
+  'quick fix as next aligned row': async () => {
+    const editor = await open('latex', '% leading-order: small x\n\\begin{align}\n  f &= \\frac{\\sin x}{x} \\label{eq:f}\n\\end{align}\n');
+    const range = select(editor, '\\frac{\\sin x}{x}');
+    const action = await fix(editor.document, range, 'as next aligned row');
+    check(action.edit, 'no edit');
+    await vscode.workspace.applyEdit(action.edit);
+    check(/\\frac\{\\sin x\}\{x\} \\\\\n\s*&= 1 - [^\n]*\\label\{eq:f\}\n\\end\{align\}/.test(editor.document.getText()), `the text is ${editor.document.getText()}`);
+  },
+
+  'quick fix in C replaces a call by a polynomial': async () => {
+    const source = '#include <math.h>\n// leading-order: small x\ndouble f(double x) { return 2.0 * (sin(x) / x); }\n';
+    const editor = await open('c', source);
+    const range = select(editor, 'sin(x) / x');
+    const action = await fix(editor.document, range, 'Replace by polynomial');
+    check(action.edit, 'no edit');
+    await vscode.workspace.applyEdit(action.edit);
+    check(!/sin\(x\)/.test(editor.document.getText()) && /6\.0|0\.1666/.test(editor.document.getText()), `the text is ${editor.document.getText()}`);
+    await vscode.commands.executeCommand('undo');
+    same(editor.document.getText(), source, 'after one undo');
+  },
+
+  'quick fix in Python replaces a call by a polynomial': async () => {
+    const source = 'import numpy as np\n\n# leading-order: small x\ny = np.exp(-x)\n';
+    const editor = await open('python', source);
+    const range = select(editor, 'np.exp(-x)');
+    const action = await fix(editor.document, range, 'Replace by polynomial');
+    check(action.edit, 'no edit');
+    await vscode.workspace.applyEdit(action.edit);
+    check(!editor.document.getText().includes('np.exp'), `the text is ${editor.document.getText()}`);
+  },
+
+  'an action whose text has moved on edits nothing': async () => {
+    const editor = await open('latex', LATEX);
+    const range = select(editor, '\\frac{\\sin x}{x}');
+    const unresolved = (await fixes(editor.document, range, 0)).find((action) => action.title.includes('after'));
+    check(unresolved && !unresolved.edit, 'an action is offered with its edit already in it');
+    const before = await fix(editor.document, range, 'after');
+    check(before.edit, 'no edit');
+    await editor.edit((builder) => builder.insert(new vscode.Position(0, 0), '% moved\n'));
+    const text = editor.document.getText();
+    const applied = await vscode.commands.executeCommand('leadingOrder.applyProposal', { uri: editor.document.uri.toString(), version: editor.document.version - 1, start: 28, end: 44 }, 'after');
+    same(applied, false, 'the result of applying an old proposal');
+    same(editor.document.getText(), text, 'the text after the refused edit');
+  },
+
+  'problems: a wrong coefficient is found and corrected': async () => {
+    const editor = await open('latex', '\\[ \\cos x = 1 - \\frac{x^2}{2} + \\frac{x^4}{42} + O(x^6) \\]\n');
+    const problem = await until('a problem', () => vscode.languages.getDiagnostics(editor.document.uri).find((d) => d.source === 'Leading Order' && d.severity === vscode.DiagnosticSeverity.Warning));
+    check(editor.document.getText(problem.range).includes('42'), `underlined: ${editor.document.getText(problem.range)}`);
+    const action = await fix(editor.document, problem.range, 'Correct to');
+    check(action.edit, 'no edit');
+    await vscode.workspace.applyEdit(action.edit);
+    check(editor.document.getText().includes('24'), `the text is ${editor.document.getText()}`);
+    await until('the problem to go', () => vscode.languages.getDiagnostics(editor.document.uri).every((d) => d.code !== 'fails'));
+  },
+
+  'a note that cannot be read is a problem of its own': async () => {
+    const editor = await open('latex', '% leading-order: smll x\n\\[ \\sin x \\]\n');
+    const problem = await until('a problem', () => vscode.languages.getDiagnostics(editor.document.uri).find((d) => d.code === 'note'));
+    check(problem.message.includes('not understood'), problem.message);
+  },
+
+  'notes complete their words': async () => {
+    const editor = await open('latex', '% leading-order: \n\\[ \\frac{\\sin \\theta}{\\theta} \\]\n');
+    const list = await vscode.commands.executeCommand<vscode.CompletionList>('vscode.executeCompletionItemProvider', editor.document.uri, new vscode.Position(0, 17), ' ');
+    const labels = list.items.map((item) => (typeof item.label === 'string' ? item.label : item.label.label));
+    check(labels.includes('small \\theta'), `offered: ${labels.join(', ')}`);
+  },
+
+  'the small quantity is remembered for the file and forgotten on command': async () => {
+    const editor = await open('latex', '\\[ \\sqrt{1 + a b} \\]\n');
+    const range = select(editor, '\\sqrt{1 + a b}');
+    const before = await fixes(editor.document, range);
+    check(before.some((action) => action.title.includes('Set the small quantity')), `offered: ${before.map((a) => a.title).join(' | ')}`);
+    await vscode.commands.executeCommand('leadingOrder.forgetAnswers');
+    check(editor.document.getText().includes('a b'), 'the text changed');
+  },
+
+  'Add Note Above states the question': async () => {
+    const editor = await open('latex', '\\begin{equation}\n  \\frac{\\sin x}{x}\n\\end{equation}\n');
+    select(editor, '\\frac{\\sin x}{x}');
+    await vscode.commands.executeCommand('leadingOrder.addNote');
+    check(/^% leading-order: small x, within 1e-6\n\\begin/.test(editor.document.getText()), `the text is ${editor.document.getText()}`);
+  },
+
+  'the engine recovers after it is ended in the middle of a request': async () => {
+    const { endEngine } = await api();
+    const editor = await open('latex', '% leading-order: small x\n\\[ \\frac{\\tan x}{x} \\]\n');
+    const asking = hoverText(editor.document, new vscode.Position(1, 8));
+    endEngine();
+    await asking;
+    await until('a hover after the restart', async () => (await hoverText(editor.document, new vscode.Position(1, 8))).includes('x²/3'));
+  },
+
+  'checks a document on command and counts its claims': async () => {
+    await open('latex', '\\[ e^x = 1 + x + \\frac{x^2}{2} + O(x^3) \\]\n');
+    const counts = await vscode.commands.executeCommand<{ readonly claims: number; readonly hold: number }>('leadingOrder.checkDocument');
+    await vscode.commands.executeCommand('workbench.action.closeQuickOpen');
+    check(counts?.claims === 1 && counts.hold === 1, `counts: ${JSON.stringify(counts)}`);
+  },
+
+  'the page opens as a view and beside the text': async () => {
+    const editor = await open('latex', LATEX);
+    select(editor, '\\frac{\\sin x}{x}');
+    await vscode.commands.executeCommand('leadingOrder.expandHere');
+    await vscode.commands.executeCommand('leadingOrder.openBeside');
+    await until('the editor tab', () => vscode.window.tabGroups.all.some((group) => group.tabs.some((tab) => tab.input instanceof vscode.TabInputWebview && tab.input.viewType.includes('leadingOrder.page'))));
+    await vscode.commands.executeCommand('workbench.action.closeActiveEditor');
+  },
+
+  'the picture takes the ink of each kind of theme': async () => {
+    const configuration = vscode.workspace.getConfiguration('workbench');
+    const before = configuration.inspect<string>('colorTheme')?.globalValue;
+    try {
+      for (const [theme, ink] of [
+        ['Default Light Modern', '#1f1f1f'],
+        ['Default High Contrast', '#ffffff'],
+        ['Default High Contrast Light', '#292929'],
+        ['Default Dark Modern', '#cccccc'],
+      ] as const) {
+        await configuration.update('colorTheme', theme, vscode.ConfigurationTarget.Global);
+        const editor = await open('latex', LATEX);
+        await until(`${ink} in ${theme}`, async () => (await hoverText(editor.document, new vscode.Position(1, 8))).includes(encodeURIComponent(`'${ink}'`).replaceAll("'", '%27')));
+      }
+    } finally {
+      await configuration.update('colorTheme', before, vscode.ConfigurationTarget.Global);
+    }
+  },
+
+  'typing stays free while checks run in a long file': async () => {
+    const line = (i: number): string => (i % 5 === 0 ? `\\[ \\sin x = x - \\frac{x^3}{6} + O(x^5) \\] % ${i}` : `Words of line ${i}.`);
+    const body = Array.from({ length: 5000 }, (_, i) => line(i)).join('\n');
+    const medianOf = async (language: string): Promise<number> => {
+      const editor = await open(language, body);
+      const times: number[] = [];
+      for (let i = 0; i < 21; i += 1) {
+        const began = performance.now();
+        await editor.edit((builder) => builder.insert(new vscode.Position(i, 0), 'a'), { undoStopBefore: false, undoStopAfter: false });
+        times.push(performance.now() - began);
+      }
+      await vscode.commands.executeCommand('workbench.action.revertAndCloseActiveEditor');
+      return times.sort((a, b) => a - b)[10] ?? 0;
+    };
+    const without = await medianOf('plaintext');
+    const withChecks = await medianOf('latex');
+    console.log(`typing in 5000 lines: median ${withChecks.toFixed(1)} ms, without the extension ${without.toFixed(1)} ms`);
+    check(withChecks < 2 * without + 50, `an edit took ${withChecks.toFixed(1)} ms; without the extension ${without.toFixed(1)} ms`);
+  },
+};

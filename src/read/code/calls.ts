@@ -1,6 +1,6 @@
 /** Names, members and calls: library functions of the language, constants, or symbols. */
 import { build, type Expression, Q, type Span } from '../../expression/index.ts';
-import { codeCall, describe } from '../../functions/index.ts';
+import { acceptsArity, codeCall, describe, lookupCode } from '../../functions/index.ts';
 import { Declined } from '../../outcome.ts';
 import { libraryArithmetic } from './arithmetic.ts';
 import type { Environment, Meaning } from './environment.ts';
@@ -134,14 +134,13 @@ function libraryCall(bare: string, prefix: string, written: string, args: readon
       const found = libraryArithmetic(arithmetic, prefix, written, args, span, env, read);
       if (found) return candidate.type ? { ...found, type: candidate.type } : withResult(found, candidate.name, prefix, env);
     }
-    const known = knownFunction(candidate.name, args.length, env);
-    if (known) {
-      const meanings = args.map((a) => read(a.kind === 'named' ? refuseNamed(a.name, written, span) : a));
-      const call = known(meanings.map((m) => m.expression));
-      if (!call) continue;
-      const integer = call.kind === 'call' && call.function === 'abs' && meanings.every((m) => m.type.kind === 'integer');
-      return { expression: { ...call, ...(call.kind === 'call' ? { written } : {}), span } as Expression, type: integer ? INTEGER : resultType(candidate.name, prefix, candidate.type, meanings, env) };
-    }
+    if (!isKnownName(candidate.name, env)) continue;
+    const meanings = args.map((a) => read(a.kind === 'named' ? refuseNamed(a.name, written, span) : a));
+    const call = knownCall(candidate.name, meanings.map((m) => m.expression), env);
+    if (!call) continue;
+    const integer = call.kind === 'call' && call.function === 'abs' && meanings.every((m) => m.type.kind === 'integer');
+    const expression: Expression = call.kind === 'call' ? { ...call, written, span } : { ...call, span };
+    return { expression, type: integer ? INTEGER : resultType(candidate.name, prefix, candidate.type, meanings, env) };
   }
   return null;
 }
@@ -155,17 +154,19 @@ function refuseNamed(argument: string, written: string, span: Span): never {
   throw new Declined('unreadable', `The argument ${argument}= of ${written} is not understood; select an expression without it.`, span);
 }
 
-/** How a name with so many arguments becomes an expression; null where no function has it. */
-function knownFunction(name: string, count: number, env: Environment): ((args: readonly Expression[]) => Expression | null) | null {
+function isKnownName(name: string, env: Environment): boolean {
   const { family, functions } = env.language;
-  const probe = codeCall(family, name, Array.from({ length: count }, () => build.symbol('x')));
-  if (probe) return (args) => codeCall(family, name, args);
+  return lookupCode(family, name) !== null || (functions !== undefined && Object.hasOwn(functions, name));
+}
+
+/** The call of a library name; null where no function of that name takes these arguments. */
+function knownCall(name: string, args: readonly Expression[], env: Environment): Expression | null {
+  const { family, functions } = env.language;
+  const call = codeCall(family, name, args);
+  if (call) return call;
   const id = functions && Object.hasOwn(functions, name) ? functions[name] : undefined;
   const description = id === undefined ? null : describe(id);
-  if (!description) return null;
-  const { arity } = description;
-  const fits = typeof arity === 'number' ? arity === count : count >= arity[0] && count <= arity[1];
-  return fits ? (args) => build.call(description.id, ...args) : null;
+  return description && acceptsArity(description, args.length) ? build.call(description.id, ...args) : null;
 }
 
 /** True for calls that are library functions, arithmetic or conversions of the language. */
@@ -174,7 +175,7 @@ export function isLibraryCall(code: CallCode, env: Environment): boolean {
     const { language } = env;
     const plain = language.foldCase ? name.toLowerCase() : name.replace(/<.*>$/s, '').replace(/\.$/, '');
     const names = [plain, ...Object.keys(language.nameSuffixes).filter((suffix) => plain.endsWith(suffix)).map((suffix) => plain.slice(0, -suffix.length))];
-    return names.some((n) => Object.hasOwn(language.arithmetic, n) || knownFunction(n, count, env) !== null);
+    return names.some((n) => Object.hasOwn(language.arithmetic, n) || knownCall(n, Array.from({ length: count }, () => build.symbol('x')), env) !== null);
   };
   const path = segments(code.callee);
   if (code.callee.kind === 'name' && env.isLocalFunction(code.callee.text)) return false;

@@ -17,6 +17,8 @@ export interface Bound {
   readonly meaning: Meaning;
   /** Names of locals that went into it. */
   readonly through: ReadonlySet<string>;
+  /** Number of nodes written out. */
+  readonly size: number;
 }
 
 /** Called with every statement before it takes effect. */
@@ -26,41 +28,32 @@ export interface Watcher {
   readonly choice?: (code: IfCode, then: Meaning, otherwise: Meaning, bindings: Bindings) => void;
 }
 
-const sizes = new WeakMap<Expression, number>();
-/** Number of nodes written out, shared subtrees counted each time. */
-export function writtenSize(e: Expression): number {
-  const known = sizes.get(e);
-  if (known !== undefined) return known;
-  let total = 1;
-  mapChildren(e, (child) => {
-    total += writtenSize(child);
-    return child;
-  });
-  sizes.set(e, total);
-  return total;
-}
-
-/** The expression with locals replaced by their values, and the locals that went in; Declined where one cannot be read. */
-export function inlined(expression: Expression, bindings: Bindings): { readonly expression: Expression; readonly through: ReadonlySet<string> } {
+/** The expression with locals replaced by their values, the locals that went in, and its size; Declined where one cannot be read. */
+export function inlined(expression: Expression, bindings: Bindings): Inlined {
   const through = new Set<string>();
-  const done = new Map<Expression, Expression>();
+  let size = 0;
   const visit = (e: Expression): Expression => {
-    const known = done.get(e);
-    if (known) return known;
-    let result: Expression;
-    if (e.kind === 'symbol' && bindings.has(e.name)) {
-      const bound = bindings.get(e.name);
-      if (!bound) throw new Declined('unreadable', `The value of ${e.name} depends on statements that cannot be followed.`, e.span);
-      through.add(e.name);
-      for (const name of bound.through) through.add(name);
-      result = bound.meaning.expression;
-    } else result = mapChildren(e, visit);
-    done.set(e, result);
-    return result;
+    const bound = e.kind === 'symbol' ? bindings.get(e.name) : undefined;
+    if (bound === undefined) {
+      size += 1;
+      return mapChildren(e, visit);
+    }
+    if (bound === null) throw new Declined('unreadable', `The value of ${e.kind === 'symbol' ? e.name : 'a variable'} depends on statements that cannot be followed.`, e.span);
+    through.add(e.kind === 'symbol' ? e.name : '');
+    for (const name of bound.through) through.add(name);
+    size += bound.size;
+    return bound.meaning.expression;
   };
   const result = visit(expression);
-  if (writtenSize(result) > MOST_NODES) throw new Declined('unreadable', 'The expression grows too long when its variables are filled in.', expression.span);
-  return { expression: result, through };
+  if (size > MOST_NODES) throw new Declined('unreadable', 'The expression grows too long when its variables are filled in.', expression.span);
+  return { expression: result, through, size };
+}
+
+interface Inlined {
+  readonly expression: Expression;
+  readonly through: ReadonlySet<string>;
+  /** Number of nodes written out. */
+  readonly size: number;
 }
 
 function changedIn(code: Code): readonly string[] {
@@ -89,6 +82,8 @@ const LAST_IS_VALUE: ReadonlySet<string> = new Set(['rust', 'julia', 'r', 'kotli
 const MOST_STEPS = 20_000;
 const DEEPEST = 60;
 
+const STATEMENT_KINDS: ReadonlySet<Code['kind']> = new Set(['block', 'return', 'declare', 'assign', 'if', 'opaque', 'function', 'import']);
+
 interface Run {
   readonly env: Environment;
   readonly watcher: Watcher;
@@ -99,7 +94,9 @@ interface Run {
 
 /** Runs a body; the value it gives back, or null where it gives none. Throws Declined where the value cannot be followed. */
 export function execute(body: Code, env: Environment, watcher: Watcher = {}): Meaning | null {
-  return finish({ env, watcher, steps: 0, lost: false }, (context) => run(statementsOf(body), 0, context, new Map(), 0), body);
+  const isExpression = !STATEMENT_KINDS.has(body.kind);
+  if (isExpression) watcher.statement?.(body, new Map());
+  return isExpression ? valueNow(body, env, new Map()).meaning : finish({ env, watcher, steps: 0, lost: false }, (context) => run(statementsOf(body), 0, context, new Map(), 0), body);
 }
 
 function finish(context: Run, body: (context: Run) => Meaning | null, code: Code): Meaning | null {
@@ -174,8 +171,8 @@ function run(statements: readonly Code[], from: number, context: Run, bindings: 
 
 export function valueNow(code: Code, env: Environment, bindings: Bindings): Bound {
   const read = readMeaning(code, env);
-  const { expression, through } = inlined(read.expression, bindings);
-  return { meaning: { expression: { ...expression, span: { start: code.start, end: code.end } }, type: read.type }, through };
+  const { expression, through, size } = inlined(read.expression, bindings);
+  return { meaning: { expression: { ...expression, span: { start: code.start, end: code.end } }, type: read.type }, through, size };
 }
 
 function bind(name: string, value: Code, env: Environment, bindings: Live): void {
@@ -184,7 +181,7 @@ function bind(name: string, value: Code, env: Environment, bindings: Live): void
     return;
   }
   const now = attempt(() => valueNow(value, env, bindings));
-  bindings.set(name, now.ok ? { meaning: now.value.meaning, through: new Set([...now.value.through, name]) } : null);
+  bindings.set(name, now.ok ? { ...now.value, through: new Set([...now.value.through, name]) } : null);
 }
 
 function assign(code: AssignCode, env: Environment, bindings: Live): void {
@@ -259,7 +256,7 @@ function rebind(code: IfCode, context: Run, bindings: Live, depth: number): void
       context.watcher.choice?.(code, yes.meaning, no.meaning, bindings);
       return chosen(code, yes.meaning, no.meaning, context.env, bindings);
     });
-    bindings.set(name, both.ok ? { meaning: both.value, through: new Set([...yes.through, ...no.through, name]) } : null);
+    bindings.set(name, both.ok && yes.size + no.size < MOST_NODES ? { meaning: both.value, through: new Set([...yes.through, ...no.through, name]), size: yes.size + no.size + 1 } : null);
   }
 }
 

@@ -63,6 +63,8 @@ const LONGEST_TEXT = 4_000_000;
 
 export class CodeReader {
   readonly #store: GrammarStore | null;
+  /** The last whole program, for the next question about the same text. */
+  #last: { readonly text: string; readonly table: CodeLanguage; readonly prepared: boolean; readonly program: Program } | null = null;
 
   /** Without a host every language is read by operator precedence. */
   constructor(host: GrammarHost | null) {
@@ -142,7 +144,12 @@ export class CodeReader {
 
   #whole<T>(text: string, language: string, use: (program: Program, table: CodeLanguage) => T): T | null {
     const table = this.#table(text, language);
-    return table.ok ? use(parseProgram(text, table.value, this.#store, null), table.value) : null;
+    if (!table.ok) return null;
+    const prepared = this.isPrepared(language);
+    const last = this.#last;
+    const program = last?.text === text && last.table === table.value && last.prepared === prepared ? last.program : parseProgram(text, table.value, this.#store, null);
+    this.#last = { text, table: table.value, prepared, program };
+    return use(program, table.value);
   }
 
   #table(text: string, language: string): Outcome<CodeLanguage> {

@@ -156,7 +156,7 @@ export const declarationsOf = (scope: Scope): readonly Declaration[] => scope.le
 /** The environment of a place. Types of names without a written type are those of their values. */
 export function environmentAt(scope: Scope, text: string, language: CodeLanguage, remarks: Remark[]): Environment {
   const fold = (name: string): string => (language.foldCase ? name.toLowerCase() : name);
-  const folded = language.foldCase ? scope.levels.map((level): Level => new Map([...level].map(([name, d]) => [fold(name), d]))) : scope.levels;
+  const folded = language.foldCase ? scope.levels.map(foldedLevel) : scope.levels;
   const find = (name: string): Declaration | undefined => {
     const key = fold(name);
     for (let i = folded.length - 1; i >= 0; i -= 1) {
@@ -199,6 +199,15 @@ export function environmentAt(scope: Scope, text: string, language: CodeLanguage
     },
   };
   return environment;
+}
+
+const foldedLevels = new WeakMap<Level, Level>();
+function foldedLevel(level: Level): Level {
+  const known = foldedLevels.get(level);
+  if (known) return known;
+  const folded: Level = new Map([...level].map(([name, d]) => [name.toLowerCase(), d]));
+  foldedLevels.set(level, folded);
+  return folded;
 }
 
 const withNone = new Map<string, boolean>();

@@ -23,6 +23,7 @@ const WIDTH: Readonly<Record<FloatFormat, number>> = { binary16: 1, bfloat16: 1,
 
 /** The type of a sum, product or power of two values. */
 export function combine(a: ValueType, b: ValueType): ValueType {
+  if (a === b) return a;
   if (a.kind === 'integer' && b.kind === 'integer') return { ...INTEGER, flexible: a.flexible && b.flexible, pending: a.pending || b.pending };
   const kind = a.kind === 'float' || b.kind === 'float' ? 'float' : 'unknown';
   const stronger = a.format === null ? b : b.format === null ? a : a.weak !== b.weak ? (a.weak ? b : a) : WIDTH[a.format] >= WIDTH[b.format] ? a : b;
@@ -31,6 +32,18 @@ export function combine(a: ValueType, b: ValueType): ValueType {
 
 /** A type by its text in a declaration; unknown where the language's table does not list it. */
 export function declaredType(text: string, language: CodeLanguage): ValueType {
+  let table = declared.get(language);
+  if (!table) declared.set(language, (table = new Map()));
+  const known = table.get(text);
+  if (known) return known;
+  const type = text.length > 200 ? UNKNOWN : typeOfText(text, language);
+  if (table.size > 500) table.clear();
+  table.set(text, type);
+  return type;
+}
+const declared = new WeakMap<CodeLanguage, Map<string, ValueType>>();
+
+function typeOfText(text: string, language: CodeLanguage): ValueType {
   const plain = text
     .replace(/\b(?:const|constexpr|constinit|static|inline|volatile|register|extern|mutable|mut|final|readonly|in|out|inout|uniform|varying|highp|mediump|lowp|precise|let|var|val|intent\([^)]*\)|parameter|value|optional|save|attributes?)\b/gi, ' ')
     .replace(/[&*?]/g, ' ')

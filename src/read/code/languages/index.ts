@@ -1,4 +1,5 @@
 /** The tables by VS Code language identifier. */
+import { languageOf } from '../../languages.ts';
 import { c } from './c.ts';
 import { cpp } from './cpp.ts';
 import { csharp } from './csharp.ts';
@@ -23,8 +24,10 @@ const tsx: CodeLanguage = { ...javascript, grammar: 'tree-sitter-tsx' };
 
 const BY_ID: Readonly<Record<string, CodeLanguage>> = { c, cpp, csharp, fortran, go, java, javascript, julia, kotlin, matlab, python, r, rust, glsl, hlsl, swift, typescript, typescriptreact: tsx, javascriptreact: javascript };
 
-/** The table of a language identifier or family; null where there is none. */
+/** The table of a language identifier, alias or family; null where there is none. */
 export function codeLanguage(id: string): CodeLanguage | null {
-  return Object.hasOwn(BY_ID, id) ? (BY_ID[id] ?? null) : null;
+  if (Object.hasOwn(BY_ID, id)) return BY_ID[id] ?? null;
+  const known = languageOf(id).id;
+  return Object.hasOwn(BY_ID, known) ? (BY_ID[known] ?? null) : null;
 }
 export const CODE_LANGUAGES: readonly string[] = Object.keys(BY_ID);

@@ -80,9 +80,16 @@ export class Parser {
     return this.#tokens[0]?.start ?? 0;
   }
 
-  /** The tokens between two offsets, without white space. */
+  /** The tokens between two offsets at or before the current one, without white space. */
   textBetween(start: number, end: number): string {
-    return this.#tokens.filter((t) => t.kind !== 'newline' && t.start >= start && t.end <= end).map((t) => t.text).join('');
+    let i = this.#at;
+    while (i > 0 && (this.#tokens[i - 1]?.start ?? -1) >= start) i -= 1;
+    let whole = '';
+    for (let token = this.#tokens[i]; token && token.kind !== 'end' && token.end <= end; token = this.#tokens[i]) {
+      if (token.kind !== 'newline') whole += token.text;
+      i += 1;
+    }
+    return whole;
   }
 
   /** An expression; where none can start, an opaque node of no width. */

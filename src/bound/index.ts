@@ -1,9 +1,30 @@
-/** Door of bound/: proven bounds of what an expansion leaves out. */
-import { attempt, type Outcome } from '../outcome.ts';
+/** Door of bound/: proven bounds of what an expansion leaves out, and what follows from them. */
+import type { Assumption, Expression, Rational } from '../expression/index.ts';
+import type { Expansion } from '../expand/index.ts';
+import { attempt, type Budget, type Outcome } from '../outcome.ts';
+import { ladderOf, type NeededProblem, reachWith, termsNeededFor } from './needed.ts';
 import { bound } from './remainder.ts';
-import type { BoundProblem, RemainderBound } from './types.ts';
+import type { BoundProblem, LadderEntry, Measure, RemainderBound, TermsNeeded, ValueAt } from './types.ts';
+import { valueAtArgument } from './value.ts';
 
 export type { BoundProblem, ClosedInterval, ExpansionWithTerms, LadderEntry, Measure, Reach, RemainderBound, TermsNeeded, ValueAt } from './types.ts';
+export type { NeededProblem } from './needed.ts';
 
 /** sup |f - sum| (or relative to |f|) over a closed interval: a proven upper and lower bound. Fails with needs-assumption (a parameter without a range), undecided, over-budget, bad-request. */
 export const boundRemainder = (problem: BoundProblem): Outcome<RemainderBound> => attempt(() => bound(problem));
+
+/** The least number of terms (at least 1) whose proven bound is within the tolerance; a reason, the best and the reach where there is none. */
+export const termsNeeded = (problem: NeededProblem, tolerance: Rational): Outcome<TermsNeeded> => attempt(() => termsNeededFor(problem, tolerance));
+
+/** Bounds for 1..n terms. */
+export const ladder = (problem: NeededProblem, n: number): Outcome<readonly LadderEntry[]> => attempt(() => ladderOf(problem, n));
+
+/** For one sum, the largest proven distance from the point within which the bound keeps the tolerance: a decimal rounded down, `inf`, or null where none was found. */
+export const reachFor = (
+  problem: { readonly expansion: Expansion; readonly measure: Measure; readonly assumptions: readonly Assumption[]; readonly budget: Budget },
+  tolerance: Rational,
+): Outcome<{ readonly distance: string } | null> => attempt(() => reachWith(problem, problem.expansion, tolerance));
+
+/** f, sum, f - sum and the percentage at an exact argument, each enclosed to about 10 digits. */
+export const valueAt = (expansion: Expansion, argument: Expression, assumptions: readonly Assumption[], budget: Budget): Outcome<ValueAt> => attempt(() => valueAtArgument(expansion, argument, assumptions, budget));
+export { boundDifference, type DifferenceBound, type DifferenceProblem, polynomialOf } from './difference.ts';

@@ -1,12 +1,10 @@
 /**
  * Best approximation by exchange (Remez 1934; the multiple exchange of de la Vallée Poussin type, after Veidinger 1960; both cited from memory).
- * Arithmetic is fixed point on BigInt: a real x is the integer x * 2^bits. Nothing here is a proof: the certified error of the result is computed elsewhere.
+ * Arithmetic is fixed point on BigInt. Nothing here is a proof: the certified error of the result is computed elsewhere.
  */
-import { Q, type Rational } from '../expression/index.ts';
+import type { Rational } from '../expression/index.ts';
 import type { Budget } from '../outcome.ts';
-
-/** A real number x as the integer nearest x * 2^bits. */
-export type Fixed = bigint;
+import { evaluateFixed, type Fixed, magnitude, toFixed } from './fixed.ts';
 
 export interface ExchangeProblem {
   readonly bits: number;
@@ -29,25 +27,9 @@ export interface ExchangeResult {
   readonly reference: readonly Fixed[];
 }
 
-const abs = (x: Fixed): Fixed => (x < 0n ? -x : x);
 const MAX_ROUNDS = 60;
 /** Samples between two neighbouring reference points when extrema are located. */
 const SAMPLES = 12n;
-
-export const toFixed = (q: Rational, bits: number): Fixed => (q.num << BigInt(bits)) / q.den;
-export const fromFixed = (x: Fixed, bits: number): Rational => Q.rational(x, 1n << BigInt(bits));
-
-/** sum c_k x^(powers[k]) by Horner's rule over the gaps of the exponents. */
-export function evaluateFixed(coefficients: readonly Fixed[], powers: readonly number[], x: Fixed, bits: number): Fixed {
-  const shift = BigInt(bits);
-  let value = 0n;
-  for (let k = powers.length - 1; k >= 0; k -= 1) {
-    value += coefficients[k] ?? 0n;
-    const gap = (powers[k] ?? 0) - (k > 0 ? (powers[k - 1] ?? 0) : 0);
-    for (let i = 0; i < gap; i += 1) value = (value * x) >> shift;
-  }
-  return value;
-}
 
 /** Points cos(pi i / n) on [low, high] from doubles: only a start for the iteration. */
 function chebyshevReference(count: number, low: Fixed, high: Fixed): Fixed[] {
@@ -67,11 +49,11 @@ function solve(matrix: Fixed[][], bits: number): Fixed[] | null {
   const shift = BigInt(bits);
   for (let column = 0; column < n; column += 1) {
     let pivot = column;
-    for (let r = column + 1; r < n; r += 1) if (abs((matrix[r] as Fixed[])[column] as Fixed) > abs((matrix[pivot] as Fixed[])[column] as Fixed)) pivot = r;
+    for (let r = column + 1; r < n; r += 1) if (magnitude((matrix[r] as Fixed[])[column] as Fixed) > magnitude((matrix[pivot] as Fixed[])[column] as Fixed)) pivot = r;
     [matrix[column], matrix[pivot]] = [matrix[pivot] as Fixed[], matrix[column] as Fixed[]];
     const top = matrix[column] as Fixed[];
     const lead = top[column] as Fixed;
-    if (abs(lead) < 16n) return null;
+    if (magnitude(lead) < 16n) return null;
     for (let r = column + 1; r < n; r += 1) {
       const row = matrix[r] as Fixed[];
       const factor = ((row[column] as Fixed) << shift) / lead;
@@ -132,14 +114,14 @@ export function exchange(problem: ExchangeProblem, budget: Budget): ExchangeResu
     const solution = solve(matrix, bits);
     if (!solution) return null;
     const coefficients = solution.slice(0, -1);
-    const levelled = abs(solution[unknowns - 1] as Fixed);
+    const levelled = magnitude(solution[unknowns - 1] as Fixed);
     const error = (x: Fixed): Fixed => {
       const [f, w] = sample(x);
       return (w * (f - evaluateFixed(coefficients, powers, x, bits))) >> shift;
     };
     const found = alternatingExtrema(reference, low, high, error, unknowns, budget);
     if (!found) return null;
-    const largest = found.reduce((m, p) => (abs(p.error) > m ? abs(p.error) : m), 0n);
+    const largest = found.reduce((m, p) => (magnitude(p.error) > m ? magnitude(p.error) : m), 0n);
     reference = found.map((p) => p.x);
     // Settled: the largest error is within a millionth of the levelled one (quadratic convergence makes the last step count).
     if ((largest - levelled) * 1_000_000n <= levelled) return { coefficients, levelled, largest, reference };
@@ -169,11 +151,11 @@ function alternatingExtrema(reference: readonly Fixed[], low: Fixed, high: Fixed
   const candidates: Extremum[] = [];
   for (let i = 0; i < grid.length; i += 1) {
     const here = grid[i] as Extremum;
-    const size = abs(here.error);
+    const size = magnitude(here.error);
     const before = grid[i - 1];
     const after = grid[i + 1];
-    const peaksBefore = !before || Math.sign(Number(before.error)) !== Math.sign(Number(here.error)) || abs(before.error) <= size;
-    const peaksAfter = !after || Math.sign(Number(after.error)) !== Math.sign(Number(here.error)) || abs(after.error) < size;
+    const peaksBefore = !before || Math.sign(Number(before.error)) !== Math.sign(Number(here.error)) || magnitude(before.error) <= size;
+    const peaksAfter = !after || Math.sign(Number(after.error)) !== Math.sign(Number(here.error)) || magnitude(after.error) < size;
     if (!peaksBefore || !peaksAfter || here.error === 0n) continue;
     candidates.push(before && after ? refine(here, after.x - here.x < here.x - before.x ? after.x - here.x : here.x - before.x, error) : here);
   }
@@ -182,14 +164,14 @@ function alternatingExtrema(reference: readonly Fixed[], low: Fixed, high: Fixed
   for (const c of candidates) {
     const last = runs[runs.length - 1];
     if (last && last.error > 0n === c.error > 0n) {
-      if (abs(c.error) > abs(last.error)) runs[runs.length - 1] = c;
+      if (magnitude(c.error) > magnitude(last.error)) runs[runs.length - 1] = c;
     } else runs.push(c);
   }
   // Drop from the ends until the right number is left; the smaller end goes first.
   while (runs.length > count) {
     const [first, last] = [runs[0] as Extremum, runs[runs.length - 1] as Extremum];
-    if (runs.length === count + 1 || abs(first.error) !== abs(last.error)) {
-      if (abs(first.error) <= abs(last.error)) runs.shift();
+    if (runs.length === count + 1 || magnitude(first.error) !== magnitude(last.error)) {
+      if (magnitude(first.error) <= magnitude(last.error)) runs.shift();
       else runs.pop();
     } else runs.shift();
   }
@@ -210,7 +192,7 @@ function refine(start: Extremum, width: Fixed, error: (x: Fixed) => Fixed): Extr
       { x: best.x + step, error: after },
       { x, error: error(x) },
     ])
-      if (abs(candidate.error) > abs(best.error) && candidate.error > 0n === start.error > 0n) best = candidate;
+      if (magnitude(candidate.error) > magnitude(best.error) && candidate.error > 0n === start.error > 0n) best = candidate;
     step /= 8n;
   }
   return best;

@@ -6,6 +6,8 @@ import { type OutlineFont, readOutlines } from './outlines.ts';
 
 /** Past this a Markdown string would be cut in the middle of the picture. */
 const LONGEST_URI = 90_000;
+/** Longer formulas would not fit anyway, and typesetting them would cost seconds. */
+const LONGEST_LATEX = 6000;
 const CONTINUATION_INDENT = 1.5;
 const LINE_GAP = 0.45;
 const MARGIN = 0.15;
@@ -24,7 +26,7 @@ export function createPictureMaker(loadFile: (name: string) => Promise<Uint8Arra
       const key = JSON.stringify([request.latex, request.ink, request.width, request.size]);
       const known = cache.get(key);
       if (known) return known;
-      const made = await make(request, fonts, loadFile).catch(() => NONE);
+      const made = request.latex.length > LONGEST_LATEX ? NONE : await make(request, fonts, loadFile).catch(() => NONE);
       if (cache.size >= CACHE_SIZE) cache.delete(cache.keys().next().value ?? '');
       cache.set(key, made);
       return made;

@@ -2,7 +2,9 @@
 import { build, type Expression, Q } from '../../expression/index.ts';
 import type { FunctionDescription } from '../description.ts';
 import { argument } from '../compose.ts';
+import { enclosed } from '../enclosure/wrap.ts';
 import { barnesGLocal, barnesGValue, logBarnesGDerivative, logBarnesGLocal } from './barnes.ts';
+import { gammaAlgorithms } from './enclosure.ts';
 import { explicitOrder, gammaLocal, gammaValue, logGammaLocal, logGammaValue, polygammaLocal, polygammaValue } from './gamma.ts';
 import { incompleteDerivative, lowerGammaLocal, lowerGammaValue, upperGammaLocal, upperGammaValue } from './incomplete.ts';
 import { gammaNames } from './names.ts';
@@ -11,7 +13,7 @@ const { call, difference, negation, number, power, product, quotient, sum } = bu
 const gamma = (e: Expression): Expression => call('gamma', e);
 const plusOne = (e: Expression): Expression => sum(e, number(1));
 
-export const gammaFunctions: readonly FunctionDescription[] = [
+const descriptions: readonly FunctionDescription[] = [
   { id: 'gamma', title: 'Gamma function', arity: 1, names: gammaNames.gamma, local: gammaLocal, value: gammaValue, derivative: ([x = number(0)]) => product(gamma(x), call('digamma', x)), domain: 'x is not 0, -1, -2, ...', source: 'DLMF 5.2.1' },
   { id: 'logGamma', title: 'logarithm of the Gamma function', arity: 1, names: gammaNames.logGamma, local: logGammaLocal, value: logGammaValue, derivative: ([x = number(0)]) => call('digamma', x), domain: 'x > 0', source: 'DLMF 5.2' },
   { id: 'digamma', title: 'digamma function', arity: 1, names: gammaNames.digamma, local: (_args, _index, place) => polygammaLocal(0, place), value: (args) => polygammaValue(0, argument(args, 0)), derivative: ([x = number(0)]) => call('polygamma', number(1), x), domain: 'x is not 0, -1, -2, ...', source: 'DLMF 5.2.2' },
@@ -62,3 +64,5 @@ export const gammaFunctions: readonly FunctionDescription[] = [
   { id: 'hyperfactorial', title: 'hyperfactorial', arity: 1, names: gammaNames.hyperfactorial, definition: ([n = number(0)]) => call('exp', difference(product(n, call('logGamma', plusOne(n))), call('logBarnesG', plusOne(n)))), domain: 'x > -1', source: 'DLMF 5.17' },
   { id: 'superfactorial', title: 'superfactorial', arity: 1, names: gammaNames.superfactorial, definition: ([n = number(0)]) => call('barnesG', sum(n, number(2))) },
 ];
+
+export const gammaFunctions = enclosed(descriptions, gammaAlgorithms);

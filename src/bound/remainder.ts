@@ -27,7 +27,10 @@ interface Result {
   readonly method: string;
 }
 
-export function bound(problem: BoundProblem): RemainderBound {
+/** Local models serve every number of terms; a ladder keeps them between its rows. */
+export type ModelCache = Map<string, { readonly length: number; readonly local: unknown }>;
+
+export function bound(problem: BoundProblem, cache: ModelCache = new Map(), lengthHint = 0): RemainderBound {
   const { expansion, assumptions, budget } = problem;
   if (expansion.exact && !expansion.left) return { value: '0', lower: '0', upperRational: Q.ZERO, lowerRational: Q.ZERO, method: 'the sum is the function', proof: ['The sum equals the function on the whole side.'] };
   const variable = variableName(expansion);
@@ -49,12 +52,13 @@ export function bound(problem: BoundProblem): RemainderBound {
   };
   const check = (): void => budget.check();
   const settled = (result: Result | null): boolean => result !== null && (result.unbounded === true || (result.upper !== null && ratioOf(result) <= SETTLED));
-  improve(run(doubles(parameters), segments, problem, variable, check));
+  const memory = { cache, lengthHint };
+  improve(run(doubles(parameters), segments, problem, variable, check, memory));
   let precision = 128;
   for (let round = 0; round < 4 && !settled(best); round += 1) {
     const before: Result | null = best;
     try {
-      improve(run(ballNumbers(precision, parameters), segments, problem, variable, check));
+      improve(run(ballNumbers(precision, parameters), segments, problem, variable, check, memory));
     } catch (error) {
       if (error instanceof Declined && error.failure.code === 'over-budget' && before !== null && (before as Result).upper !== null) break;
       throw error;
@@ -93,7 +97,7 @@ function answer(result: Result | null): RemainderBound {
 }
 const roundedUp = (q: Rational): Rational => (q.num < 0n ? Q.ZERO : q);
 
-function run<T>(n: Numbers<T>, segments: readonly Segment[], problem: BoundProblem, variable: string, check: () => void): Result | null {
+function run<T>(n: Numbers<T>, segments: readonly Segment[], problem: BoundProblem, variable: string, check: () => void, memory: Memory): Result | null {
   const { r } = n;
   const { measure } = problem;
   const length = n.precision <= 53 ? 14 : Math.min(40, 14 + Math.floor(n.precision / 16));
@@ -126,7 +130,7 @@ function run<T>(n: Numbers<T>, segments: readonly Segment[], problem: BoundProbl
       tasks.push(task);
       continue;
     }
-    const near = segment.atPoint ? atPoint(segment, n, problem, variable, lower, check) : atInfinity(segment, sum, n, problem, variable, lower, check);
+    const near = segment.atPoint ? atPoint(segment, n, problem, variable, lower, check, memory) : atInfinity(segment, sum, n, problem, variable, lower, check);
     if (near === null) return null;
     if (near.kind === 'unbounded') return { upper: null, lower: n.toBall(r.zero) ?? real.ZERO, steps: near.steps, place: near.place, unbounded: true, method: 'leading term of the remainder' };
     raise(near.lower);
@@ -150,6 +154,22 @@ function run<T>(n: Numbers<T>, segments: readonly Segment[], problem: BoundProbl
   return u === null || l === null ? null : { upper: u, lower: l, steps, method: [...methods].join(' and ') };
 }
 
+interface Memory {
+  readonly cache: ModelCache;
+  readonly lengthHint: number;
+}
+
+/** The local model of f on a part, from memory where it is long enough. */
+function remembered<T>(part: Segment, key: string, n: Numbers<T>, variable: string, length: number, q: number, check: () => void, memory: Memory): Local<T> | null {
+  const full = `${key}|${n.precision}|${q}`;
+  const known = memory.cache.get(full);
+  if (known && known.length >= length) return known.local as Local<T> | null;
+  const wanted = known ? Math.max(length, memory.lengthHint) : length;
+  const local = localModel(part, null, n, variable, wanted, q, check);
+  memory.cache.set(full, { length: wanted, local });
+  return local;
+}
+
 function wholeTask<T>(segment: Segment, sum: Expression, n: Numbers<T>): PieceTask<T> | null {
   if (segment.lower === null || segment.upper === null) return null;
   const [x0, x1] = [n.value(segment.lower), n.value(segment.upper)];
@@ -170,13 +190,11 @@ interface Unbounded {
 }
 
 /** The segment that starts at the point of expansion: the whole of it by the local model, or a part of it with the rest left to pieces. */
-function atPoint<T>(segment: Segment, n: Numbers<T>, problem: BoundProblem, variable: string, lower: T, check: () => void): Near<T> | Unbounded | null {
+function atPoint<T>(segment: Segment, n: Numbers<T>, problem: BoundProblem, variable: string, lower: T, check: () => void, memory: Memory): Near<T> | Unbounded | null {
   const { r } = n;
   const base = denominatorOf(segment.expansion);
   if (base === null) return null;
-  const order = segment.expansion.remainder?.power;
   const count = Math.max(2, segment.expansion.terms.length);
-  void order;
   let settledLower = lower;
   for (let cut = 0; cut < 24; cut += 1) {
     const part = cutSegment(segment, cut);
@@ -185,7 +203,7 @@ function atPoint<T>(segment: Segment, n: Numbers<T>, problem: BoundProblem, vari
       let length = neededLength(segment.expansion, q, count) + EXTRA;
       for (let attempt = 0; attempt < 3; attempt += 1) {
         check();
-        const local = localModel(part.near, null, n, variable, length, q, check);
+        const local = remembered(part.near, `${segment.local}${segment.expansion.side}${cut}`, n, variable, length, q, check, memory);
         if (local === null) break;
         const remainder = remainderAtPoint(local, segment.expansion, n);
         if (remainder === null) {

@@ -1,0 +1,248 @@
+/** Ladder of terms against bound, the least number of terms for a tolerance, and how far from the point a tolerance can be kept. */
+import { build, type Assumption, type Expression, Q, type Rational } from '../expression/index.ts';
+import { type Expansion, prefix } from '../expand/index.ts';
+import { type Budget, Declined } from '../outcome.ts';
+import { type Ball, encloseReal, real } from '../rigorous/index.ts';
+import { describe } from '../functions/index.ts';
+import { sumOf } from './local.ts';
+import { ballNumbers } from './numbers.ts';
+import { remainderAt } from './pieces.ts';
+import { bound, type ModelCache, variableName } from './remainder.ts';
+import type { ClosedInterval, ExpansionWithTerms, LadderEntry, Measure, Reach, RemainderBound, TermsNeeded } from './types.ts';
+
+export interface NeededProblem {
+  readonly expansionWithTerms: ExpansionWithTerms;
+  readonly interval: ClosedInterval;
+  readonly measure: Measure;
+  readonly assumptions: readonly Assumption[];
+  readonly budget: Budget;
+}
+
+const MOST_TERMS = 1000;
+
+/** Expansions with any number of terms, asked for in growing portions and cut down. */
+function supply(expansionWithTerms: ExpansionWithTerms): (n: number) => Expansion {
+  let have: Expansion | null = null;
+  let asked = 0;
+  return (n) => {
+    if (have === null || (n > asked && !have.exact)) {
+      asked = Math.max(n, Math.min(MOST_TERMS, n <= 8 ? 8 : 2 * n));
+      const next = expansionWithTerms(asked);
+      if (!next.ok) {
+        asked = n;
+        const exact = expansionWithTerms(n);
+        if (!exact.ok) throw new Declined(exact.error.code, exact.error.message);
+        have = exact.value;
+      } else have = next.value;
+    }
+    return n >= have.terms.length ? have : prefix(have, n);
+  };
+}
+
+function bounder(problem: NeededProblem, expansionOf: (n: number) => Expansion): (n: number) => RemainderBound {
+  const cache: ModelCache = new Map();
+  return (n) => {
+    const expansion = expansionOf(n);
+    return bound({ expansion, interval: problem.interval, measure: problem.measure, assumptions: problem.assumptions, budget: problem.budget }, cache, 2 * n + 40);
+  };
+}
+
+/** Bounds for 1..n terms; stops where the sum is exact. */
+export function ladderOf(problem: NeededProblem, n: number): readonly LadderEntry[] {
+  const expansionOf = supply(problem.expansionWithTerms);
+  const boundOf = bounder(problem, expansionOf);
+  const rows: LadderEntry[] = [];
+  for (let k = 1; k <= n; k += 1) {
+    const expansion = expansionOf(k);
+    rows.push({ terms: k, expansion, bound: boundOf(k) });
+    if (expansion.exact) break;
+  }
+  return rows;
+}
+
+/**
+ * The least number of terms, at least 1, whose proven bound is within the tolerance. Numbers whose error at an end of the interval exceeds the tolerance are refuted
+ * by that one value; only the others are bounded on the whole interval.
+ */
+export function termsNeededFor(problem: NeededProblem, tolerance: Rational): TermsNeeded {
+  if (tolerance.num <= 0n) throw new Declined('bad-request', 'The tolerance must be greater than zero.');
+  const expansionOf = supply(problem.expansionWithTerms);
+  const boundOf = bounder(problem, expansionOf);
+  const endError = endErrors(problem, tolerance);
+  let best: { terms: number; bound: RemainderBound } | null = null;
+  let smallest: { terms: number; size: number } = { terms: 1, size: Infinity };
+  let refuted = true;
+  let unbounded: RemainderBound | null = null;
+  const sizes: number[] = [];
+  for (let n = 1; n <= MOST_TERMS; n += 1) {
+    problem.budget.check();
+    const expansion = expansionOf(n);
+    const quick = endError(expansion);
+    let size = quick === null ? Infinity : logarithm(quick);
+    if (quick === null || Q.compare(quick, tolerance) <= 0) {
+      const result = boundOf(n);
+      if (result.upperRational === null) {
+        // Poles at the point go away with more terms; others never do.
+        unbounded = result;
+        if (!mayGoAway(expansion, result)) return { terms: null, reason: reasonOfPlace(result) };
+        continue;
+      }
+      if (Q.compare(result.upperRational, tolerance) <= 0) return { terms: n, expansion, bound: result, minimal: n === 1 || refuted };
+      refuted = result.lowerRational !== null && Q.compare(result.lowerRational, tolerance) > 0;
+      size = logarithm(result.upperRational);
+      if (best === null || (best.bound.upperRational !== null && Q.compare(result.upperRational, best.bound.upperRational) < 0)) best = { terms: n, bound: result };
+    } else refuted = true;
+    sizes[n] = size;
+    if (expansion.exact || (expansion.terms.length < n && expansion.remainder === null)) break;
+    if (size < smallest.size) smallest = { terms: n, size };
+    const limit = expansion.divergent ? 4 + Math.floor(smallest.terms / 3) : 6 + Math.floor(smallest.terms / 2);
+    if (n - smallest.terms > limit) {
+      const bounded = best ?? { terms: smallest.terms, bound: boundOf(smallest.terms) };
+      return noNumber(problem, expansionOf, expansion, tolerance, bounded);
+    }
+    if (n >= 60 && n % 30 === 0) {
+      const more = furtherTerms(n, sizes, size - logarithm(tolerance));
+      if (more !== null && n + more > 1.3 * MOST_TERMS) return { terms: null, reason: 'slow', estimate: Math.ceil(n + more) };
+    }
+  }
+  if (smallest.terms >= MOST_TERMS - 5) return { terms: null, reason: 'slow', estimate: 2 * MOST_TERMS };
+  if (unbounded) return { terms: null, reason: reasonOfPlace(unbounded) };
+  const last = best ?? { terms: smallest.terms, bound: boundOf(smallest.terms) };
+  return { terms: null, reason: 'No number of terms up to 1000 keeps the tolerance on this interval.', best: { terms: last.terms, bound: last.bound.value ?? '' } };
+}
+
+/** A proven lower bound of the error by its values at the finite ends of the interval; null where they are not defined. */
+function endErrors(problem: NeededProblem, tolerance: Rational): (expansion: Expansion) => Rational | null {
+  const ends = [problem.interval.lower, problem.interval.upper];
+  const precision = 80 + Math.max(0, Math.ceil(-Math.log2(Math.max(1e-300, Q.toDouble(tolerance)))));
+  return (expansion) => {
+    const variable = variableName(expansion);
+    let largest: Rational | null = null;
+    for (const end of ends) {
+      const x = encloseReal(end, new Map(), precision, describe);
+      if (x === null) continue;
+      const point = expansion.point;
+      const side = expansion.left && point !== 'inf' && point !== '-inf' && isLeft(x, point, precision) ? expansion.left : expansion;
+      const value = remainderAt(x, { expansion: side, sum: sumOf(side) }, ballNumbers(precision, new Map()), { variable, measure: problem.measure });
+      if (value === null) continue;
+      const size = real.lower(real.absoluteLower(value));
+      if (largest === null || Q.compare(size, largest) > 0) largest = size;
+    }
+    return largest;
+  };
+}
+function isLeft(x: Ball, point: Expression, precision: number): boolean {
+  const p = encloseReal(point, new Map(), precision, describe);
+  return p !== null && real.compare(x, p) === -1;
+}
+
+const reasonOfPlace = (result: RemainderBound): string => (result.place ? 'The function has a singularity in the interval that no sum removes.' : 'The remainder is unbounded on the interval.');
+const mayGoAway = (expansion: Expansion, result: RemainderBound): boolean => {
+  const power = expansion.remainder?.power;
+  const negative = power !== undefined && power !== null && ((power.kind === 'number' && power.value.num < 0n) || power.kind === 'negation');
+  return negative && result.place !== undefined;
+};
+
+/** Number of further terms until the error falls by `missing` (in logarithms), from log error = a - b n - c log n through the last three marks; null where it does not fall. */
+function furtherTerms(n: number, sizes: readonly number[], missing: number): number | null {
+  const step = Math.floor(n / 3);
+  const [first, second, now] = [sizes[n - 2 * step], sizes[n - step], sizes[n]];
+  if (step < 4 || first === undefined || second === undefined || now === undefined) return null;
+  const [d1, d2] = [first - second, second - now];
+  const [l1, l2] = [Math.log((n - step) / (n - 2 * step)), Math.log(n / (n - step))];
+  if (!(d2 > 0)) return null;
+  const c = (d1 - d2) / (l1 - l2);
+  const b = (d2 - c * l2) / step;
+  let low = 0;
+  let high = 1e7;
+  const fall = (m: number): number => b * m + c * Math.log((n + m) / n);
+  if (b < 0 || !(fall(high) > missing)) return b < -1e-3 ? null : high;
+  for (let k = 0; k < 60; k += 1) {
+    const middle = (low + high) / 2;
+    if (fall(middle) > missing) high = middle;
+    else low = middle;
+  }
+  return high;
+}
+const logarithm = (q: Rational): number => {
+  const value = Q.toDouble(q);
+  return value > 0 ? Math.log(value) : -745;
+};
+
+function noNumber(problem: NeededProblem, expansionOf: (n: number) => Expansion, expansion: Expansion, tolerance: Rational, best: { terms: number; bound: RemainderBound }): TermsNeeded {
+  const reason = expansion.divergent
+    ? 'The series diverges: beyond its best number of terms the error grows.'
+    : 'The interval reaches beyond the radius of convergence, where more terms make the error larger.';
+  const reach = reachOf(problem, expansionOf, expansion, tolerance, best.terms);
+  return { terms: null, reason, best: { terms: best.terms, bound: best.bound.value ?? '' }, ...(reach ? { reach } : {}) };
+}
+
+/** How far from the point the tolerance can be kept by some number of terms. */
+function reachOf(problem: NeededProblem, expansionOf: (n: number) => Expansion, expansion: Expansion, tolerance: Rational, around: number): Reach | null {
+  if (!expansion.divergent && expansion.radius?.value) {
+    const value = encloseReal(expansion.radius.value, new Map(), 96, describe);
+    if (value === null) return null;
+    return { distance: real.toDecimalDown(value, 12), closed: false };
+  }
+  if (!expansion.divergent) return null;
+  let best: { distance: string; size: Rational } | null = null;
+  let worse = 0;
+  for (let n = 1; n <= around * 4 + 20 && worse < 4; n += 1) {
+    const found = reachWith(problem, expansionOf(n), tolerance);
+    if (found !== null && (best === null || Q.compare(found.size, best.size) > 0)) {
+      best = found;
+      worse = 0;
+    } else if (best !== null) worse += 1;
+  }
+  return best === null ? null : { distance: best.distance, closed: true };
+}
+
+/** For one sum: the largest proven distance from the point (1/|x| at infinity) within which the bound keeps the tolerance; null where none was found. */
+export function reachWith(problem: Omit<NeededProblem, 'expansionWithTerms' | 'interval'>, expansion: Expansion, tolerance: Rational): { readonly distance: string; readonly size: Rational } | null {
+  if (expansion.exact && !expansion.left) return { distance: 'inf', size: Q.rational(10n ** 30n) };
+  const keeps = (distance: Rational): boolean => {
+    try {
+      const result = bound({ ...problem, expansion, interval: around(expansion, distance) });
+      return result.upperRational !== null && Q.compare(result.upperRational, tolerance) <= 0;
+    } catch (error) {
+      if (error instanceof Declined && error.failure.code !== 'over-budget') return false;
+      throw error;
+    }
+  };
+  // A power of two that keeps it while its double does not, then halving to 8 digits.
+  let low: Rational = Q.ONE;
+  if (keeps(low)) {
+    while (keeps(Q.multiply(low, Q.rational(2n)))) {
+      low = Q.multiply(low, Q.rational(2n));
+      if (low.num > 1n << 200n) return { distance: 'inf', size: low };
+    }
+  } else {
+    for (let k = 0; ; k += 1) {
+      low = Q.divide(low, Q.rational(2n));
+      if (keeps(low)) break;
+      if (k > 200) return null;
+    }
+  }
+  let high = Q.multiply(low, Q.rational(2n));
+  for (let k = 0; k < 24; k += 1) {
+    const middle = Q.divide(Q.add(low, high), Q.rational(2n));
+    if (keeps(middle)) low = middle;
+    else high = middle;
+  }
+  // The printed number itself must keep it: rounding down may only shrink the interval.
+  return { distance: real.rationalToDecimal(low, 7, -1), size: low };
+}
+
+/** All x within the distance, on the sides that the expansion serves. */
+function around(expansion: Expansion, distance: Rational): ClosedInterval {
+  const infinity = build.constant('infinity');
+  const size = build.number(distance);
+  if (expansion.point === 'inf') return { lower: build.number(Q.reciprocal(distance)), upper: infinity };
+  if (expansion.point === '-inf') return { lower: build.negation(infinity), upper: build.number(Q.negate(Q.reciprocal(distance))) };
+  const point: Expression = expansion.point;
+  const onePoint = expansion.side !== 'both' && !expansion.left;
+  return {
+    lower: onePoint && expansion.side === 'right' ? point : build.difference(point, size),
+    upper: onePoint && expansion.side === 'left' ? point : build.sum(point, size),
+  };
+}

@@ -5,7 +5,9 @@ import {
   add, divide, eventualSign, exactOf, exponential, generalPower, isLiteralOne, isLiteralZero, isRational, monomialOf, multiply, negate, type Multi, orderSeries, power,
   Series, theta,
 } from '../series/index.ts';
+import { evaluateApply } from './apply.ts';
 import { evaluateCall } from './calls.ts';
+import { evaluateIndexed } from './sums/evaluate-sum.ts';
 import { evaluateIntegral } from './integral.ts';
 import type { Session } from './session.ts';
 
@@ -66,6 +68,11 @@ function byKind(s: Session, e: Expression): Multi {
       return orderTerm(s, e.argument, e.little);
     case 'derivative':
       return evaluateDerivative(s, e);
+    case 'apply':
+      return evaluateApply(s, e, evaluate);
+    case 'indexedSum':
+    case 'indexedProduct':
+      return evaluateIndexed(s, e, evaluate);
     case 'integral':
       return evaluateIntegral(s, e, evaluate);
     default:

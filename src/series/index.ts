@@ -13,3 +13,4 @@ export { add, monomial, multiply, negate, scaleBy, shift, streamIn, subtract, su
 export { createScale, insertFormal, logarithmOf } from './scale.ts';
 export { compareEventually, type Parts, split } from './split.ts';
 export { dropTerms, finiteStream, mapStream, prepend, takeTerms } from './stream.ts';
+export { integralTail } from './tail.ts';

@@ -64,11 +64,11 @@ function perfectPower(n: bigint): { readonly root: bigint; readonly exponent: nu
 
 /** A proper divisor by Pollard's rho (Brent's form), or null after a bounded search. */
 function properDivisor(n: bigint): bigint | null {
-  for (let c = 1n; c <= 4n; c += 1n) {
+  for (let c = 1n; c <= 2n; c += 1n) {
     let x = 2n;
     let y = 2n;
     let product = 1n;
-    for (let i = 1; i <= 60000; i += 1) {
+    for (let i = 1; i <= 30000; i += 1) {
       x = (x * x + c) % n;
       y = (y * y + c) % n;
       y = (y * y + c) % n;

@@ -9,23 +9,14 @@ export interface LinearFactor {
   readonly exponent: number;
 }
 
-const MAX_DEGREE = 12;
-const MAX_END = 1_000_000n;
-
-function divisors(n: bigint): readonly bigint[] {
-  const size = n < 0n ? -n : n;
-  const found: bigint[] = [];
-  for (let d = 1n; d * d <= size; d += 1n) {
-    if (size % d !== 0n) continue;
-    found.push(d);
-    if (d * d !== size) found.push(size / d);
-  }
-  return found;
-}
+const MAX_DEGREE = 40;
+/** Roots p/q with larger p or q are not worth writing as factors. */
+const MAX_ROOT = 200n;
+const MAX_DENOMINATOR = 24n;
 
 /**
- * The linear factors of a primitive polynomial in one parameter without monomial factor, largest root last; null where it does not split, is linear already (unless `alone` is
- * false), or has coefficients too large to be worth writing as a product.
+ * The linear factors of a primitive polynomial in one parameter without monomial factor, largest root last; null where it does not split into such with small roots,
+ * is linear already, or is a quadratic binomial that stands alone (a^2 - 1).
  */
 export function linearFactors(f: Polynomial, isParameter: (kernel: number) => boolean, withMonomial: boolean): readonly LinearFactor[] | null {
   const kernels = [...kernelsIn(f)];
@@ -37,12 +28,12 @@ export function linearFactors(f: Polynomial, isParameter: (kernel: number) => bo
   if (degree === 2 && !withMonomial && f.length === 2) return null;
   let c: bigint[] = Array.from({ length: degree + 1 }, () => 0n);
   for (const t of f) c[exponentIn(t.monomial, kernel) as number] = t.coefficient;
-  const low = c[0] as bigint;
-  const high = c[degree] as bigint;
-  if (low === 0n || (low < 0n ? -low : low) > MAX_END || (high < 0n ? -high : high) > MAX_END) return null;
   const roots: Rational[] = [];
-  for (const q of divisors(high)) {
-    for (const p of divisors(low)) {
+  const high = c[degree] as bigint;
+  for (let q = 1n; q <= MAX_DENOMINATOR && c.length > 1; q += 1n) {
+    if (high % q !== 0n) continue;
+    for (let p = 1n; p <= MAX_ROOT && c.length > 1; p += 1n) {
+      if ((c[0] as bigint) % p !== 0n) continue;
       for (const sign of [1n, -1n]) {
         const root = Q.rational(sign * p, q);
         if (root.den !== q) continue;

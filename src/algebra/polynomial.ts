@@ -172,4 +172,14 @@ export function samePolynomial(f: Polynomial, g: Polynomial): boolean {
   });
 }
 
-export const polynomialKey = (f: Polynomial): string => f.map((t) => `${t.coefficient}*${monomialKey(t.monomial)}`).join('+');
+const keys = new WeakMap<Polynomial, string>();
+
+/** Equal keys exactly for equal polynomials of one field. Kept with the polynomial. */
+export function polynomialKey(f: Polynomial): string {
+  let key = keys.get(f);
+  if (key === undefined) {
+    key = f.map((t) => `${t.coefficient}*${monomialKey(t.monomial)}`).join('+');
+    keys.set(f, key);
+  }
+  return key;
+}

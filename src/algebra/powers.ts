@@ -376,8 +376,12 @@ function logarithmOfNumber(ctx: Context, a: Element): Element | null {
   if (up === null || right === null) return null;
   if (right === 0) return plus(ctx, size, times(ctx, i, scaleElement(pi, Q.rational(up, 2))));
   const angle = ctx.call('atan', [divideElements(ctx, im, re)]);
+  // Of other numbers the logarithm stays whole: the parts would bring nested roots.
+  const familiar = (rationalOf(re) && rationalOf(im)) || isRationalMultipleOfPi(ctx, angle);
+  if (!familiar) return null;
   return plus(ctx, size, times(ctx, i, right > 0 ? angle : plus(ctx, angle, scaleElement(pi, Q.rational(up)))));
 }
+const isRationalMultipleOfPi = (ctx: Context, a: Element): boolean => singleKernel(rationalMultiple(a).unit)?.kernel === constantKernel(ctx, 'pi').index;
 const signOfReal = (ctx: Context, a: Element): -1 | 1 | null => (isQuotient(a) ? ctx.signOfNumber(a) : a.num > 0n ? 1 : -1);
 const isRealAlgebraic = (ctx: Context, a: Element): boolean => !isQuotient(a) || (isRealSet(ctx.signs.of(a)) && isNumericRadicand(ctx, a) && a.monomial.kernels.every((k) => ctx.table.relations[k]?.numeric === true));
 

@@ -3,6 +3,8 @@ import { build, type Expression, Q } from '../../expression/index.ts';
 import type { FunctionDescription } from '../description.ts';
 import { minus } from '../compose.ts';
 import { asRational } from '../exactForms.ts';
+import { enclosed } from '../enclosure/wrap.ts';
+import { integralAlgorithms } from './enclosure.ts';
 import { dawsonLocal, erfcinvLocal, erfcLocal, erfiLocal, erfinvLocal, erfLocal, fresnelCLocal, fresnelSLocal } from './error.ts';
 import { chiLocal, ciLocal, cinLocal, eiLocal, einLocal, expIntegralLocal, expIntegralValue, shiLocal, siLocal } from './exponential.ts';
 import { integralNames as n } from './names.ts';
@@ -19,7 +21,7 @@ const atOrigin =
     return exact && Q.isZero(exact) ? number(value) : null;
   };
 
-export const integralFunctions: readonly FunctionDescription[] = [
+const descriptions: readonly FunctionDescription[] = [
   { id: 'erf', title: 'error function', arity: 1, parity: 'odd', names: n.erf, local: erfLocal, value: atOrigin(0), derivative: ([x = number(0)]) => product(quotient(number(2), squareRoot(pi)), exp(negation(sq(x)))), source: 'DLMF 7.2.1' },
   { id: 'erfc', title: 'complementary error function', arity: 1, names: n.erfc, local: erfcLocal, value: atOrigin(1), derivative: ([x = number(0)]) => negation(product(quotient(number(2), squareRoot(pi)), exp(negation(sq(x))))), source: 'DLMF 7.2.2' },
   { id: 'erfi', title: 'imaginary error function', arity: 1, parity: 'odd', names: n.erfi, local: erfiLocal, value: atOrigin(0), derivative: ([x = number(0)]) => product(quotient(number(2), squareRoot(pi)), exp(sq(x))), source: 'DLMF 7.2.5' },
@@ -43,3 +45,5 @@ export const integralFunctions: readonly FunctionDescription[] = [
   { id: 'sinhIntegral', title: 'hyperbolic sine integral', arity: 1, parity: 'odd', names: n.sinhIntegral, local: shiLocal, value: atOrigin(0), derivative: ([x = number(0)]) => quotient(call('sinh', x), x), source: 'DLMF 6.2.15' },
   { id: 'coshIntegral', title: 'hyperbolic cosine integral', arity: 1, names: n.coshIntegral, local: chiLocal, derivative: ([x = number(0)]) => quotient(call('cosh', x), x), domain: 'x > 0', source: 'DLMF 6.2.16' },
 ];
+
+export const integralFunctions = enclosed(descriptions, integralAlgorithms);

@@ -3,20 +3,26 @@ import { dependsOn, type Expression, Q } from '../expression/index.ts';
 import { attempt, type Budget, Declined, type Outcome } from '../outcome.ts';
 import { addElements, isRational, multiplyElements, plainText } from '../series/index.ts';
 import { assemble } from './assemble.ts';
+import { inCompound } from './compound.ts';
 import type { Expansion, ExpansionProblem } from './expansion.ts';
 import { type Direction, expandSide, type SideResult } from './side.ts';
 
 /**
- * The expansion of problem.function in problem.variable (one symbol) at the point, to `terms` terms or to `order`.
+ * The expansion of problem.function in problem.variable (a symbol, or a quantity like v/c taken as one) at the point, to `terms` terms or to `order`.
  * Rejects: unknown functions, essential singularities and unbounded oscillation at finite points ('no-expansion'), signs that assumptions do not decide ('needs-assumption'), zero tests without an answer ('undecided').
  */
 export function expand(problem: ExpansionProblem, budget: Budget): Outcome<Expansion> {
   return attempt(() => {
-    validate(problem);
-    if (problem.point === 'inf' || problem.point === '-inf') return oneSide(problem, problem.point, budget);
-    if (problem.side !== 'both') return oneSide(problem, problem.side, budget);
-    return bothSides(problem, budget);
+    if (problem.variable.kind !== 'symbol') return inCompound(problem, (inner) => expandSymbol(inner, budget));
+    return expandSymbol(problem, budget);
   });
+}
+
+function expandSymbol(problem: ExpansionProblem, budget: Budget): Expansion {
+  validate(problem);
+  if (problem.point === 'inf' || problem.point === '-inf') return oneSide(problem, problem.point, budget);
+  if (problem.side !== 'both') return oneSide(problem, problem.side, budget);
+  return bothSides(problem, budget);
 }
 
 function validate(problem: ExpansionProblem): void {

@@ -9,6 +9,8 @@ export interface ExpansionTerm {
   readonly log: number;
   /** A further factor on another scale (exp(-x), log(log(x))^2, cos(x - pi/4)), written in the variable; null if none. */
   readonly scale: Expression | null;
+  /** With several small quantities: the weight of this block, which stands in the coefficient; `power` is then 0. */
+  readonly weight?: Expression;
 }
 
 export interface ExpansionRemainder {
@@ -52,6 +54,7 @@ export type { Assumption };
 
 export interface ExpansionProblem {
   readonly function: Expression;
+  /** A symbol, or a quantity made of symbols by products, quotients and powers (`v/c`). */
   readonly variable: Expression;
   readonly point: Expression | 'inf' | '-inf';
   readonly side: 'both' | 'right' | 'left';
@@ -69,4 +72,19 @@ export interface RootProblem extends Omit<ExpansionProblem, 'function'> {
   readonly near?: Expression | 'inf' | '-inf';
   /** Also branches that are not real. */
   readonly complex?: boolean;
+}
+
+/** One of several small quantities: it becomes point + s^weight (quantity - point), and the function is expanded in s -> 0+, then s = 1. */
+export interface SmallQuantity {
+  readonly symbol: Expression;
+  readonly weight: Rational;
+  /** Default 0. */
+  readonly point?: Expression;
+}
+
+/** Expand in several small quantities at once; `terms` counts blocks of equal weight. */
+export interface SmallProblem extends Omit<ExpansionProblem, 'variable' | 'point' | 'side'> {
+  readonly quantities: readonly SmallQuantity[];
+  /** True for an iterated expansion: each quantity is smaller than every power of the ones before it; weights are then not used. */
+  readonly iterated?: boolean;
 }

@@ -1,5 +1,6 @@
 /** The door of expand/: from a tree to its expansion. */
 export { expand } from './expand.ts';
-export type { Expansion, ExpansionProblem, ExpansionRemainder, ExpansionTerm, RootProblem } from './expansion.ts';
+export type { Expansion, ExpansionProblem, ExpansionRemainder, ExpansionTerm, RootProblem, SmallProblem, SmallQuantity } from './expansion.ts';
+export { expandSmall } from './small.ts';
 export { expandRoot } from './root/expand-root.ts';
 export { partialSum, prefix, remainderScale } from './sum.ts';

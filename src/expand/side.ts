@@ -48,6 +48,18 @@ function chartOf(problem: Pick<ExpansionProblem, 'variable' | 'point'>, directio
     : { symbol, variable: build.difference(a, w), inverse: build.difference(a, variable), infinite };
 }
 
+export function openContext(field: Field, budget: Budget, symbol: string, local: Expression, largeLogarithm: Expression, oscillation: boolean): Context {
+  return {
+    field,
+    budget,
+    scale: createScale(local, largeLogarithm),
+    local: symbol,
+    oscillation,
+    notes: { sided: false, divergent: false, subdominantDropped: false, assumptions: new Set() },
+    patience: { value: 16 },
+  };
+}
+
 export interface OpenSide {
   readonly context: Context;
   /** The variable bound to its series. */
@@ -67,15 +79,7 @@ export function openSide(problem: Pick<ExpansionProblem, 'variable' | 'point' | 
   const field: Field = createField([...problem.assumptions, positive], budget, describe);
   const local = chart.infinite ? build.quotient(build.number(1), w) : w;
   const largeLogarithm = chart.infinite ? build.call('log', w) : build.negation(build.call('log', w));
-  const context: Context = {
-    field,
-    budget,
-    scale: createScale(local, largeLogarithm),
-    local: chart.symbol,
-    oscillation: chart.infinite,
-    notes: { sided: false, divergent: false, subdominantDropped: false, assumptions: new Set() },
-    patience: { value: 16 },
-  };
+  const context = openContext(field, budget, chart.symbol, local, largeLogarithm, chart.infinite);
   const exponent = chart.infinite ? Q.MINUS_ONE : Q.ONE;
   const base = new Series(context.scale.local, finiteStream([{ exponent, coefficient: Q.ONE }]), () => w);
   const same = chart.symbol === name;

@@ -1,0 +1,134 @@
+/** Several small quantities at once: one bookkeeping parameter s with weights, or one quantity far smaller than the other. */
+import { createField } from '../algebra/index.ts';
+import type { Element } from '../algebra/types.ts';
+import { type Assumption, build, dependsOn, type Expression, Q, substitute } from '../expression/index.ts';
+import { describe } from '../functions/index.ts';
+import { attempt, type Budget, Declined, type Outcome } from '../outcome.ts';
+import { add, addElements, compareExponents, type Context, exactOf, insertFormal, isRational, monomial, type Multi, scaleBy } from '../series/index.ts';
+import { evaluate } from './evaluate.ts';
+import type { Expansion, ExpansionTerm, SmallProblem, SmallQuantity } from './expansion.ts';
+import { factorTree, type RawTerm, rawTerms } from './flatten.ts';
+import { openSession } from './session.ts';
+import { openContext } from './side.ts';
+
+/**
+ * Each quantity q becomes point + s^weight q, the function is expanded in s -> 0+, then s = 1: terms are blocks of equal weight, coefficients are homogeneous in the quantities.
+ * The remainder's scale is max(|q|^(1/weight))^power. With `iterated` each quantity is smaller than every power of the one before it.
+ */
+export function expandSmall(problem: SmallProblem, budget: Budget): Outcome<Expansion> {
+  return attempt(() => {
+    if (problem.quantities.length === 0 || problem.quantities.some((q) => q.symbol.kind !== 'symbol')) throw new Declined('bad-request', 'Name the small quantities, each by one symbol.');
+    if (problem.quantities.some((q) => Q.signOf(q.weight) <= 0)) throw new Declined('bad-request', 'The weight of a small quantity must be positive.');
+    if ((problem.terms === undefined) === (problem.order === undefined)) throw new Declined('bad-request', 'Ask for a number of terms or for an order, not both.');
+    return problem.iterated ? iterated(problem, budget) : weighted(problem, budget);
+  });
+}
+
+const LOCAL = "s'";
+const nameOf = (q: SmallQuantity): string => (q.symbol.kind === 'symbol' ? q.symbol.name : '');
+const isAtZero = (q: SmallQuantity): boolean => q.point === undefined || (q.point.kind === 'number' && Q.isZero(q.point.value));
+
+function weighted(problem: SmallProblem, budget: Budget): Expansion {
+  const s = build.symbol(LOCAL);
+  const positive: Assumption = { kind: 'relation', left: s, relation: '>', right: build.number(0) };
+  const field = createField([...problem.assumptions, positive], budget, describe);
+  const c = openContext(field, budget, LOCAL, s, build.negation(build.call('log', s)), false);
+  const bindings = new Map<string, Multi>();
+  const offsets = new Map<string, Expression>();
+  for (const q of problem.quantities) {
+    const name = nameOf(q);
+    const offset = isAtZero(q) ? name : `${name}'`;
+    if (!isAtZero(q)) offsets.set(offset, build.difference(q.symbol, q.point as Expression));
+    const moving = scaleBy(c, monomial(c, c.scale.local, q.weight), field.fromExpression(build.symbol(offset)));
+    bindings.set(name, isAtZero(q) ? moving : add(c, field.fromExpression(q.point as Expression), moving));
+  }
+  const series = evaluate(openSession(c, bindings), problem.function);
+  const { blocks, remainder } = takeBlocks(c, series, problem);
+  const back = (e: Expression): Expression => [...offsets].reduce((tree, [name, value]) => substituteSymbol(tree, name, value), e);
+  const terms: ExpansionTerm[] = blocks.map((b) => ({ coefficient: back(exactOf(c, b.coefficient)), power: build.number(0), log: 0, scale: null, weight: exactOf(c, b.power) }));
+  const sizes = problem.quantities.map((q) => {
+    const size = build.call('abs', isAtZero(q) ? q.symbol : build.difference(q.symbol, q.point as Expression));
+    return Q.isOne(q.weight) ? size : build.power(size, Q.reciprocal(q.weight));
+  });
+  const local = sizes.length === 1 && sizes[0] ? sizes[0] : build.call('max', ...sizes);
+  const first = problem.quantities[0] as SmallQuantity;
+  return {
+    function: problem.function,
+    variable: first.symbol,
+    point: first.point ?? build.number(0),
+    side: 'both',
+    local,
+    logarithm: build.call('log', local),
+    prefactor: null,
+    terms,
+    remainder: remainder ? { power: exactOf(c, remainder.power), log: remainder.log, scale: null } : null,
+    exact: remainder === null && !c.notes.subdominantDropped,
+    divergent: c.notes.divergent && remainder !== null,
+    oscillating: false,
+    assumptions: [...new Set([...c.notes.assumptions, ...[...field.needed].filter((a) => !a.includes(LOCAL))])],
+  };
+}
+
+const substituteSymbol = (e: Expression, name: string, value: Expression): Expression => (dependsOn(e, name) ? substitute(e, name, value) : e);
+
+interface Block {
+  readonly power: Element;
+  readonly coefficient: Element;
+}
+
+/** Terms of equal power of s together; powers of log s vanish at s = 1 and only count in the remainder. */
+function takeBlocks(c: Context, series: Multi, problem: SmallProblem): { blocks: Block[]; remainder: RawTerm | null } {
+  const blocks: Block[] = [];
+  for (const term of rawTerms(c, series)) {
+    if (term.factors.length > 0 || term.oscillation) throw new Declined('no-expansion', 'The function has an essential singularity where the small quantities vanish; expand it in one of them.');
+    const last = blocks[blocks.length - 1];
+    const same = last !== undefined && compareExponents(c, last.power, term.power) === 0;
+    if (term.order) return { blocks, remainder: term };
+    const full = problem.terms !== undefined ? blocks.length >= problem.terms && !same : compareExponents(c, term.power, problem.order ?? Q.ZERO) >= 0;
+    if (full) return { blocks, remainder: term };
+    const coefficient = term.log === 0 ? term.coefficient : Q.ZERO;
+    if (same) blocks[blocks.length - 1] = { power: last.power, coefficient: addElements(c, last.coefficient, coefficient) };
+    else blocks.push({ power: term.power, coefficient });
+  }
+  return { blocks, remainder: null };
+}
+
+/** The first quantity is t; each further one is smaller than every power of it. */
+function iterated(problem: SmallProblem, budget: Budget): Expansion {
+  const [outer, ...inner] = problem.quantities;
+  if (!outer || inner.length !== 1 || problem.quantities.some((q) => !isAtZero(q))) throw new Declined('bad-request', 'An iterated expansion takes two quantities that tend to zero, such as y << x.');
+  const x = nameOf(outer);
+  const positive: Assumption[] = problem.quantities.map((q) => ({ kind: 'relation', left: q.symbol, relation: '>', right: build.number(0) }));
+  const field = createField([...problem.assumptions, ...positive], budget, describe);
+  const c = openContext(field, budget, x, outer.symbol, build.negation(build.call('log', outer.symbol)), false);
+  const bindings = new Map<string, Multi>([[x, monomial(c, c.scale.local, Q.ONE)]]);
+  for (const q of inner) bindings.set(nameOf(q), monomial(c, insertFormal(c, nameOf(q)), Q.ONE));
+  const series = evaluate(openSession(c, bindings), problem.function);
+  const terms: ExpansionTerm[] = [];
+  let remainder: Expansion['remainder'] = null;
+  for (const term of rawTerms(c, series)) {
+    const shown: ExpansionTerm = { coefficient: exactOf(c, term.coefficient), power: exactOf(c, term.power), log: term.log, scale: factorTree(c, term.factors) };
+    const full = problem.terms !== undefined ? terms.length >= problem.terms : terms.length > 0 && isRational(term.power) && compareExponents(c, term.power, problem.order ?? Q.ZERO) >= 0;
+    if (full || term.order) {
+      remainder = { power: shown.power, log: shown.log, scale: shown.scale };
+      break;
+    }
+    terms.push(term.log % 2 === 0 ? shown : { ...shown, coefficient: exactOf(c, field.negate(term.coefficient)) });
+  }
+  const order = `${nameOf(inner[0] as SmallQuantity)} << ${x}`;
+  return {
+    function: problem.function,
+    variable: outer.symbol,
+    point: build.number(0),
+    side: 'right',
+    local: outer.symbol,
+    logarithm: build.call('log', outer.symbol),
+    prefactor: null,
+    terms,
+    remainder,
+    exact: remainder === null && !c.notes.subdominantDropped,
+    divergent: c.notes.divergent && remainder !== null,
+    oscillating: false,
+    assumptions: [order, ...positive.map((a) => (a.kind === 'relation' && a.left.kind === 'symbol' ? `${a.left.name} > 0` : '')), ...c.notes.assumptions, ...field.needed],
+  };
+}

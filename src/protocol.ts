@@ -168,7 +168,7 @@ export interface ExpandAnswer {
   readonly needed?: NeededAnswer;
   readonly ladder?: readonly LadderRow[];
   readonly reach?: readonly ReachRow[];
-  readonly at?: { readonly argument: string; readonly function: string; readonly sum: string; readonly error: string; readonly percent: string | null };
+  readonly at?: { readonly argument: string; readonly function: string; readonly sum: string; readonly error: string; readonly percent: string | null; /** Enclosures behind the shown digits. */ readonly enclosures?: unknown };
   readonly left?: ExpandAnswer;
   readonly branches?: readonly ExpandAnswer[];
   readonly value?: { readonly low: string; readonly high: string };
@@ -206,6 +206,8 @@ export interface PlotAnswer {
   readonly x: readonly number[];
   readonly f: readonly (number | null)[];
   readonly sum: readonly (number | null)[];
+  /** |f - sum|, from more digits than the two columns have. */
+  readonly error?: readonly (number | null)[];
 }
 
 export type Verdict = 'holds' | 'fails' | 'undecided';
@@ -276,6 +278,8 @@ export interface Failure {
   readonly message: string;
   readonly start?: number;
   readonly end?: number;
+  /** Where it is not plain which quantity is small: what it could be. */
+  readonly candidates?: readonly string[];
 }
 export interface ErrorAnswer {
   readonly id?: string | number;

@@ -1,9 +1,9 @@
 /** `expand`: text -> expansion, bound, terms needed, and the details asked for. */
-import type { Expression, Rational } from '../expression/index.ts';
-import { expand, type Expansion, type ExpansionProblem } from '../expand/index.ts';
+import type { Rational } from '../expression/index.ts';
+import { expand, expandRoot, type Expansion, type ExpansionProblem } from '../expand/index.ts';
 import { type Budget, failure, type Outcome, success } from '../outcome.ts';
-import type { ExpandAnswer, ExpandRequest } from '../protocol.ts';
-import { rationalOf, readExact, readSmall } from '../read/index.ts';
+import type { ExpandAnswer, ExpandRequest, Failure } from '../protocol.ts';
+import { rationalOf, readExact } from '../read/index.ts';
 import { readAllAssumptions } from './assumptions.ts';
 import { withBounds } from './bounds.ts';
 import { expansionAnswer } from './expansionAnswer.ts';
@@ -11,7 +11,7 @@ import { equationOf, functionOf, questionOf, readPoint, variableOf } from './que
 import { insertionAnswer } from './insertion.ts';
 import { readingAnswer } from './reading.ts';
 import type { EngineTools } from './resources.ts';
-import { type SourceFormula, sourceFormula } from './source.ts';
+import { candidatesOf, type SourceFormula, sourceFormula } from './source.ts';
 
 const DEFAULT_TERMS = 4;
 
@@ -37,17 +37,35 @@ function expanderOf(request: ExpandRequest, source: SourceFormula, time: Budget)
     if (!first.ok) return first;
     return success({ first: first.value, withTerms: (terms) => solve({ terms }) });
   };
-  if (request.small || request.unknown !== undefined) return failure('undecided', 'Not in this build.');
+  if (request.small) return failure('undecided', 'Several small quantities are not expanded in this build.');
+  if (request.unknown !== undefined || (source.unknown !== undefined && source.expression.kind === 'relation')) return rootOf(request, source, run, time);
   const question = questionOf(request, source);
   if (!question.ok) return question;
   return run((n) => expand({ ...question.value, ...n } satisfies ExpansionProblem, time));
+}
+
+type Run = (solve: (size: { readonly terms?: number; readonly order?: Rational }) => Outcome<Expansion>) => Outcome<Expander>;
+
+function rootOf(request: ExpandRequest, source: SourceFormula, run: Run, time: Budget): Outcome<Expander> {
+  const name = request.unknown ?? source.unknown ?? '';
+  const unknown = source.readSymbol(name);
+  if (!unknown.ok) return failure('bad-request', `The unknown "${name}" cannot be read: ${unknown.error.message}`);
+  const equation = equationOf(source.expression);
+  const variable = variableOf(request, equation, { ...source, unknown: unknown.value.kind === 'symbol' ? unknown.value.name : name });
+  if (!variable.ok) return variable;
+  const near = request.near === undefined ? null : readPoint(request.near);
+  if (near && !near.ok) return near;
+  const assumptions = readAllAssumptions(request.assume);
+  if (!assumptions.ok) return assumptions;
+  const problem = { equation, unknown: unknown.value, ...variable.value, side: request.side ?? 'both', assumptions: assumptions.value, complex: request.complex ?? false, ...(near ? { near: near.value } : {}) };
+  return run((size) => expandRoot({ ...problem, ...size }, time));
 }
 
 export async function askExpand(request: ExpandRequest, tools: EngineTools, time: Budget): Promise<Outcome<ExpandAnswer>> {
   const source = await sourceFormula(request, tools);
   if (!source.ok) return source;
   const expander = expanderOf(request, source.value, time);
-  if (!expander.ok) return expander;
+  if (!expander.ok) return placed(expander.error, request, source.value);
   const answer = expansionAnswer(expander.value.first);
   const reading = request.details?.includes('reading') ? { reading: readingAnswer(request, source.value, expander.value.first) } : {};
   const place = { document: request.text, language: request.language, expression: request.text.slice(source.value.start, source.value.end) };
@@ -55,3 +73,9 @@ export async function askExpand(request: ExpandRequest, tools: EngineTools, time
   return withBounds({ ...answer, ...reading, ...insertion }, expander.value, request, time);
 }
 
+/** In a document a failure names the place of the expression, and what it could be expanded in. */
+function placed(error: Failure, request: ExpandRequest, source: SourceFormula): Outcome<never> {
+  if (!request.selection) return { ok: false, error };
+  const names = candidatesOf(source, functionOf(source.expression)).list.map((candidate) => candidate.name);
+  return { ok: false, error: { start: source.start, end: source.end, ...error, ...(names.length > 0 ? { candidates: names } : {}) } };
+}

@@ -1,6 +1,7 @@
 /** The result as the document would write it: in prose its own mathematical style, in code its own language and float type. */
 import type { Expansion } from '../expand/index.ts';
 import { type DocumentStyle, PLAIN_STYLE } from '../expression/index.ts';
+import { documentStyle } from '../read/index.ts';
 import type { InsertionAnswer } from '../protocol.ts';
 import { codeLanguage, continuationLatex, expansionLatex, hornerExpression } from '../write/index.ts';
 
@@ -9,13 +10,27 @@ export interface InsertionPlace {
   readonly language: string;
   /** The text of the expression itself. */
   readonly expression: string;
-  /** How the document writes its mathematics; plain where it is not prose. */
-  readonly style?: DocumentStyle;
 }
 
 export function insertionAnswer(expansion: Expansion, place: InsertionPlace): InsertionAnswer {
-  const style = place.style ?? PLAIN_STYLE;
+  const style = styleOf(place);
   return { continuation: continuationLatex(expansion, style), expansion: expansionLatex(expansion, style), code: codeOf(expansion, place) };
+}
+
+/** The habits of a document of prose; what they leave open is written plainly. */
+function styleOf({ document, language }: InsertionPlace): DocumentStyle {
+  if (codeLanguage(language)) return PLAIN_STYLE;
+  const habits = documentStyle(document, { language });
+  return {
+    ...PLAIN_STYLE,
+    order: { macro: habits.order, little: 'o', argument: habits.orderTakesGroup ? 'braces' : 'parentheses' },
+    fraction: habits.coefficient === 'slash' ? 'slash' : habits.fraction,
+    coefficient: habits.coefficient === 'before' ? 'outside' : 'inside',
+    logarithm: habits.logarithm,
+    approximation: habits.approximation,
+    ending: habits.remainder === 'approximation' ? 'none' : habits.remainder,
+    dots: habits.dots,
+  };
 }
 
 function codeOf(expansion: Expansion, { language, expression, document }: InsertionPlace): InsertionAnswer['code'] {

@@ -1,36 +1,40 @@
 /** What an expand request asks, as exact data: function, variable, point, side, assumptions. */
-import { dependsOn, type Assumption, type Expression, freeSymbols, walk } from '../expression/index.ts';
+import type { Assumption, Expression } from '../expression/index.ts';
 import { failure, type Outcome, success } from '../outcome.ts';
 import type { ExpandRequest, Side } from '../protocol.ts';
-import { readExact } from '../read/index.ts';
+import { principalSide, readExact } from '../read/index.ts';
 import { toLatex } from '../write/index.ts';
 import { readAllAssumptions } from './assumptions.ts';
-import type { SourceFormula } from './source.ts';
+import { candidatesOf, type SourceFormula } from './source.ts';
 
+export type Point = Expression | 'inf' | '-inf';
 export interface Question {
   readonly function: Expression;
   readonly variable: Expression;
-  readonly point: Expression | 'inf' | '-inf';
+  readonly point: Point;
   readonly side: Side;
   readonly assumptions: readonly Assumption[];
 }
 
 /** `0`, `inf`, `-inf` or an exact expression in plain or LaTeX notation. */
-export function readPoint(text: string): Outcome<Expression | 'inf' | '-inf'> {
+export function readPoint(text: string): Outcome<Point> {
   const plain = text.replace(/\s/g, '');
-  if (/^\+?(inf|infinity|oo|∞|\\infty)$/.test(plain)) return success('inf');
-  if (/^[-−](inf|infinity|oo|∞|\\infty)$/.test(plain)) return success('-inf');
-  return readExact(text);
+  if (/^\+?(inf|infinity|∞|\\infty)$/.test(plain)) return success('inf');
+  if (/^[-−](inf|infinity|∞|\\infty)$/.test(plain)) return success('-inf');
+  const read = readExact(text);
+  return read.ok ? success(pointOf(read.value)) : failure('bad-request', `The point "${text}" cannot be read: ${read.error.message}`);
 }
 
-const isTruncation = (e: Expression): boolean => [...walk(e)].some((n) => n.kind === 'order' || n.kind === 'dots');
-const isName = (e: Expression): boolean => e.kind === 'symbol' || e.kind === 'apply';
+function pointOf(e: Expression): Point {
+  if (e.kind === 'constant' && e.name === 'infinity') return 'inf';
+  if (e.kind === 'negation' && e.operand.kind === 'constant' && e.operand.name === 'infinity') return '-inf';
+  return e;
+}
 
-/** The side of a chain `T = f(x) \approx 1 + x` that is to be expanded: the first that is neither a mere name nor an expansion already. */
+/** The side of a chain `T = f(x) \approx 1 + x` that is to be expanded. */
 export function functionOf(formula: Expression): Expression {
   if (formula.kind !== 'relation') return formula;
-  const worth = formula.sides.filter((side) => !isName(side));
-  return worth.find((side) => !isTruncation(side)) ?? worth[0] ?? formula.sides[formula.sides.length - 1] ?? formula;
+  return formula.sides[principalSide(formula) ?? formula.sides.length - 1] ?? formula;
 }
 
 /** The equation lhs - rhs of a relation to be solved; a lone expression stands for expression = 0. */
@@ -42,21 +46,26 @@ export function equationOf(formula: Expression): Expression {
   return { kind: 'sum', terms: [left, { kind: 'negation', operand: right }] };
 }
 
-/** The variable named in the request, or the only symbol there is. */
-export function variableOf(request: ExpandRequest, target: Expression, source: SourceFormula): Outcome<Expression> {
+/** The variable named in the request, or the one that the text leaves no doubt about, with the point that goes with it. */
+export function variableOf(request: ExpandRequest, target: Expression, source: SourceFormula): Outcome<{ readonly variable: Expression; readonly point: Point }> {
+  const asked = request.point === undefined ? null : readPoint(request.point);
+  if (asked && !asked.ok) return asked;
   if (request.variable !== undefined) {
     const read = source.readSymbol(request.variable);
     if (!read.ok) return failure('bad-request', `The variable "${request.variable}" cannot be read: ${read.error.message}`);
-    return read;
+    return success({ variable: read.value, point: asked?.value ?? ZERO });
   }
-  const free = freeSymbols(target).filter((name) => name !== source.unknown);
-  const [only] = free;
-  if (free.length === 1 && only !== undefined) return success({ kind: 'symbol', name: only });
-  if (free.length === 0) return failure('bad-request', 'This expression contains no symbol to expand in; choose one that does.');
-  const [likely] = source.likely;
-  if (source.likely.length === 1 && likely && freeSymbols(likely).every((name) => dependsOn(target, name))) return success(likely);
-  return failure('bad-request', `This could be expanded in ${listed(free.map((name) => toLatex({ kind: 'symbol', name })))}; say in which one.`);
+  const { found, list } = candidatesOf(source, target);
+  if (found && !isUnknown(found.variable.expression, source)) return success({ variable: found.variable.expression, point: asked?.value ?? pointOf(found.point) });
+  const others = list.filter((c) => !isUnknown(c.expression, source));
+  const [only] = others;
+  if (only && others.length === 1) return success({ variable: only.expression, point: asked?.value ?? ZERO });
+  if (others.length === 0) return failure('bad-request', 'This expression contains no symbol to expand in; choose one that does.');
+  return failure('bad-request', `This could be expanded in ${listed(others.map((c) => toLatex(c.expression)))}; say in which one.`);
 }
+
+const ZERO: Expression = { kind: 'number', value: { num: 0n, den: 1n } };
+const isUnknown = (e: Expression, source: SourceFormula): boolean => e.kind === 'symbol' && e.name === source.unknown;
 
 function listed(names: readonly string[]): string {
   const shown = names.slice(0, 8);
@@ -68,9 +77,7 @@ export function questionOf(request: ExpandRequest, source: SourceFormula): Outco
   const target = functionOf(source.expression);
   const variable = variableOf(request, target, source);
   if (!variable.ok) return variable;
-  const point = readPoint(request.point ?? '0');
-  if (!point.ok) return failure('bad-request', `The point "${request.point ?? ''}" cannot be read: ${point.error.message}`);
   const assumptions = readAllAssumptions(request.assume);
   if (!assumptions.ok) return assumptions;
-  return success({ function: target, variable: variable.value, point: point.value, side: request.side ?? 'both', assumptions: assumptions.value });
+  return success({ function: target, ...variable.value, side: request.side ?? 'both', assumptions: assumptions.value });
 }

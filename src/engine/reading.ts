@@ -1,9 +1,9 @@
 /** What was understood of a request, for the first line of a hover and the controls of the page. */
-import { type Expression, freeSymbols } from '../expression/index.ts';
+import type { Expression } from '../expression/index.ts';
 import type { Expansion } from '../expand/index.ts';
 import type { ExpandRequest, ReadingAnswer } from '../protocol.ts';
 import { toLatex, toPlain } from '../write/index.ts';
-import type { SourceFormula } from './source.ts';
+import { candidatesOf, type SourceFormula } from './source.ts';
 
 export function readingAnswer(request: ExpandRequest, source: SourceFormula, expansion: Expansion): ReadingAnswer {
   const { point, variable } = expansion;
@@ -17,6 +17,6 @@ export function readingAnswer(request: ExpandRequest, source: SourceFormula, exp
     point: pointText(toPlain, 'inf'),
     pointLatex: pointText(toLatex, '\\infty'),
     side: expansion.side,
-    candidates: [...new Set([...source.likely.map(toPlain), ...freeSymbols(expansion.function)])],
+    candidates: candidatesOf(source, expansion.function).list.map((c) => c.name),
   };
 }

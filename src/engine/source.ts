@@ -2,17 +2,17 @@
 import type { Expression } from '../expression/index.ts';
 import { failure, type Outcome, success } from '../outcome.ts';
 import type { ExpandRequest } from '../protocol.ts';
-import { type CodeReading, codeLanguage } from '../read/code/index.ts';
-import { readFormula, readVariable } from '../read/index.ts';
+import { type Candidate, candidates, codeLanguage, type CodeReading, locate, orderTerms, readFormula, readVariable, type Surroundings } from '../read/index.ts';
 import type { EngineTools } from './resources.ts';
 
 export interface SourceFormula {
+  /** The whole chain of relations for a text that is one formula; the expression meant for a place in a document. */
   readonly expression: Expression;
   readonly conditions: readonly Expression[];
   /** Canonical name of the symbol to solve for, where the text says so (`y:\ y^3 + y = x`). */
   readonly unknown?: string;
-  /** Quantities that the text itself marks as small or large. */
-  readonly likely: readonly Expression[];
+  /** What stands around the formula and may tell its small quantity. */
+  readonly surroundings: Surroundings;
   /** Reads a symbol or compound quantity written as in the text. */
   readonly readSymbol: (text: string) => Outcome<Expression>;
   /** Where the formula stands in the request's text, in UTF-16 code units. */
@@ -22,41 +22,74 @@ export interface SourceFormula {
   readonly code?: CodeReading;
 }
 
-export async function sourceFormula(request: Pick<ExpandRequest, 'text' | 'language' | 'selection' | 'variable' | 'unknown'>, tools: EngineTools): Promise<Outcome<SourceFormula>> {
-  const { text, language } = request;
+export type SourceRequest = Pick<ExpandRequest, 'text' | 'language' | 'selection' | 'variable' | 'unknown'>;
+
+export async function sourceFormula(request: SourceRequest, tools: EngineTools): Promise<Outcome<SourceFormula>> {
+  const { text, language, selection } = request;
   if (text.trim() === '') return failure('unreadable', 'There is nothing to read; select an expression.', { start: 0, end: text.length });
-  return codeLanguage(language) ? codeFormula(request, tools) : proseFormula(request);
+  if (codeLanguage(language)) {
+    try {
+      await tools.code.prepare(language);
+    } catch {
+      // Without its grammar a language is still read by operator precedence.
+    }
+    if (!selection) return wholeCode(text, language, tools);
+  }
+  return selection ? placeInDocument(request, selection, tools) : wholeFormula(request);
 }
 
-async function codeFormula({ text, language, selection }: Pick<ExpandRequest, 'text' | 'language' | 'selection'>, { code }: EngineTools): Promise<Outcome<SourceFormula>> {
-  try {
-    await code.prepare(language);
-  } catch {
-    // Without its grammar a language is still read by operator precedence.
-  }
-  const read = selection ? code.readCodeAt(text, language, selection) : code.readCode(text, language);
-  if (!read.ok) return read;
-  const { expression, span } = read.value;
-  const readSymbol = (name: string): Outcome<Expression> => {
+/** Names of the request that the reader must take as quantities. */
+const namedSymbols = ({ variable, unknown }: SourceRequest): string[] => [variable, unknown].filter((s): s is string => s !== undefined && /^\\?[A-Za-z]+\w*$/.test(s));
+
+const symbolReader =
+  (language: string, { code }: EngineTools) =>
+  (name: string): Outcome<Expression> => {
+    if (!codeLanguage(language)) return readVariable(name);
     const symbol = code.readCode(name, language);
     return symbol.ok ? success(symbol.value.expression) : symbol;
   };
-  return success({ expression, conditions: [], likely: [], readSymbol, start: span.start, end: span.end, code: read.value });
+
+function wholeCode(text: string, language: string, tools: EngineTools): Outcome<SourceFormula> {
+  const read = tools.code.readCode(text, language);
+  if (!read.ok) return read;
+  const { expression, span } = read.value;
+  return success({ expression, conditions: [], surroundings: {}, readSymbol: symbolReader(language, tools), start: span.start, end: span.end, code: read.value });
 }
 
-function proseFormula({ text, language, variable, unknown }: Pick<ExpandRequest, 'text' | 'language' | 'variable' | 'unknown'>): Outcome<SourceFormula> {
-  const notation = language === 'plain' ? 'plain' : 'latex';
-  const symbols = [variable, unknown].filter((s): s is string => s !== undefined && /^\\?[A-Za-z]+\w*$/.test(s));
-  const formula = readFormula(text, notation, { symbols });
+function placeInDocument(request: SourceRequest, selection: { readonly start: number; readonly end: number }, tools: EngineTools): Outcome<SourceFormula> {
+  const { text, language } = request;
+  const symbols = namedSymbols(request);
+  const found = locate(text, language, selection, { codeReader: tools.code, ...(symbols.length > 0 ? { symbols } : {}) });
+  if (!found.ok) return found;
+  const { expression, start, end, context } = found.value;
+  return success({
+    expression,
+    conditions: context.conditions,
+    ...(context.unknown === null ? {} : { unknown: context.unknown }),
+    surroundings: { orders: context.orders, conditions: context.conditions, before: context.before, after: context.after },
+    readSymbol: symbolReader(found.value.language, tools),
+    start,
+    end,
+    ...(context.code ? { code: context.code } : {}),
+  });
+}
+
+function wholeFormula(request: SourceRequest): Outcome<SourceFormula> {
+  const { text, language } = request;
+  const symbols = namedSymbols(request);
+  const formula = readFormula(text, language === 'plain' ? 'plain' : 'latex', { symbols });
   if (!formula.ok) return formula;
-  const { expression, conditions, unknown: marked } = formula.value;
+  const { expression, conditions, unknown } = formula.value;
   return success({
     expression,
     conditions,
-    ...(marked === undefined ? {} : { unknown: marked }),
-    likely: [],
+    ...(unknown === undefined ? {} : { unknown }),
+    surroundings: { orders: orderTerms(expression), conditions },
     readSymbol: (name) => readVariable(name),
-    start: 0,
-    end: text.length,
+    start: expression.span?.start ?? 0,
+    end: expression.span?.end ?? text.length,
   });
 }
+
+/** The candidates for the small quantity of one expression of the source. */
+export const candidatesOf = (source: SourceFormula, target: Expression): { readonly list: readonly Candidate[]; readonly found: ReturnType<typeof candidates>['found'] } => candidates(target, source.surroundings);

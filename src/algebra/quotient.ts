@@ -38,7 +38,11 @@ const NO_FACTORS: readonly Factor[] = [];
 export const isQuotient = (a: Element): a is Quotient => (a as { readonly compound?: string }).compound === 'quotient';
 
 const raw = (content: Rational, monomial: Monomial, numerator: Polynomial, denominator: readonly Factor[]): Element =>
-  isUnit(monomial) && denominator.length === 0 && isOnePolynomial(numerator) ? content : { compound: 'quotient', content, monomial, numerator, denominator };
+  isOnePolynomial(numerator)
+    ? isUnit(monomial) && denominator.length === 0
+      ? content
+      : { compound: 'quotient', content, monomial, numerator: ONE_POLYNOMIAL, denominator }
+    : { compound: 'quotient', content, monomial, numerator, denominator };
 
 /** Parts of any element. */
 export const partsOf = (a: Element): Quotient => (isQuotient(a) ? a : { compound: 'quotient', content: a, monomial: UNIT, numerator: ONE_POLYNOMIAL, denominator: NO_FACTORS });

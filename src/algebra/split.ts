@@ -3,7 +3,7 @@ import { Q, type Rational } from '../expression/index.ts';
 import { kernelElement, imaginaryKernel, type Context } from './context.ts';
 import type { Exponent } from './exponent.ts';
 import { exponentIn, UNIT, withoutKernel } from './monomial.ts';
-import { ONE_POLYNOMIAL, type Term } from './polynomial.ts';
+import { isOnePolynomial, type Term } from './polynomial.ts';
 import { addElements, isQuotient, multiplyElements, normalise, type Quotient } from './quotient.ts';
 import type { Element } from './types.ts';
 
@@ -42,7 +42,7 @@ export function byImaginaryUnit(ctx: Context, a: Element): { readonly re: Elemen
 
 /** The one kernel and exponent that make up a monomial element with content 1, else null. */
 export function singleKernel(a: Element): { readonly kernel: number; readonly exponent: Exponent } | null {
-  if (!isQuotient(a) || a.monomial.kernels.length !== 1 || a.numerator !== ONE_POLYNOMIAL || a.denominator.length > 0 || !Q.isOne(a.content)) return null;
+  if (!isQuotient(a) || a.monomial.kernels.length !== 1 || !isOnePolynomial(a.numerator) || a.denominator.length > 0 || !Q.isOne(a.content)) return null;
   return { kernel: a.monomial.kernels[0] as number, exponent: a.monomial.exponents[0] as Exponent };
 }
 

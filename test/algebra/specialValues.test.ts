@@ -119,6 +119,9 @@ describe('branches', () => {
     [b.call('tanh', b.call('log', n(2))), [], '3/5'],
     [b.call('sin', b.call('acos', s('x'))), [], 'sqrt(1 - x^2)'],
     [b.call('sin', b.product(i, s('a'))), [], 'i*sinh(a)'],
+    [b.call('cosh', b.product(i, angle(1, 2))), [], '0'],
+    [b.call('sinh', b.product(i, angle(1, 6))), [], 'i/2'],
+    [b.call('tanh', b.product(i, angle(1, 4))), [], 'i'],
   ] as [Expression, Assumption[], string][])('%#', (e, assume, expected) => expect(simplify(e, assume)).toBe(expected));
 });
 

@@ -1,0 +1,108 @@
+/** From judgements to what is shown: verdict, severity, the wrong piece, the right one. */
+import { freeSymbols, Q, type Expression, type Span } from '../expression/index.ts';
+import type { Finding } from '../protocol.ts';
+import { toPlain } from '../write/index.ts';
+import { blame } from './blame.ts';
+import { type Claim, isTranscendental } from './claims.ts';
+import type { FoundFormula } from './formulas.ts';
+import { type Hint, judge, type Judgement } from './judge.ts';
+import { notationOf } from './notation.ts';
+import type { Setting } from './context.ts';
+import { settingsFor, type Around, type Asked, type Choice } from './setting.ts';
+import { hasMarks } from './truncated.ts';
+
+export interface Place {
+  readonly text: string;
+  readonly formula: FoundFormula;
+  readonly around: Around;
+}
+
+/** Judged in one setting. */
+interface Tried {
+  readonly choice: Choice;
+  readonly judgement: Judgement;
+}
+
+/**
+ * The finding for one claim with its function known; null where it turns out not to be a claim (an identity, an equation to solve).
+ * `lenient`: the function is only presumed, so that nothing fails.
+ */
+export function findingOf(claim: Claim, f: Expression, asked: Asked, place: Place, options: { readonly lenient?: string } = {}): Finding | null {
+  const choices = settingsFor(f, claim.side, asked, place.around);
+  const tried: Tried[] = [];
+  for (const choice of choices) {
+    const judgement = judge(f, claim.side, claim.relation, choice.setting);
+    if (judgement.kind === 'identity') return null;
+    if (judgement.kind === 'holds') return holding(claim, f, choice.setting, judgement, place, options.lenient);
+    tried.push({ choice, judgement });
+  }
+  const best = tried.reduce<Tried | null>((a, b) => (a === null || matchedIn(b) > matchedIn(a) ? b : a), null);
+  if (!best) return null;
+  if (best.judgement.kind === 'undecided') return meant(claim, f, best.choice.setting) ? undecided(claim, place, best.judgement.reason) : null;
+  if (best.judgement.kind !== 'fails') return null;
+  if (!isHeldAgainst(claim, f, best, tried.length > 1, place)) return meant(claim, f, best.choice.setting) && hasMarks(claim.side) ? undecided(claim, place, 'It is not plain in which quantity, and where, this is an expansion; say so with a note such as leading-order: small x.') : null;
+  if (options.lenient !== undefined) return undecided(claim, place, `Taken as ${options.lenient} the claim does not hold; its definition does not stand in this document.`);
+  return failing(claim, f, best.choice.setting, best.judgement, place);
+}
+
+const matchedIn = (t: Tried): number => (t.judgement.kind === 'fails' ? t.judgement.failure.matched : -1);
+
+/** The claim is plainly meant as a truncated expansion: by its mark, or by terms that agree. */
+function isHeldAgainst(claim: Claim, f: Expression, best: Tried, several: boolean, place: Place): boolean {
+  if (best.judgement.kind !== 'fails') return false;
+  const { failure, truncated } = best.judgement;
+  const count = truncated.terms.length;
+  const certain = best.choice.certain;
+  if (claim.relation === 'to' || claim.relation === 'define') return false;
+  if (claim.relation === 'tilde' && (count === 1 || place.formula.inline) && truncated.mark === 'none') return !place.formula.inline && certain && failure.matched === 0 && count === 1;
+  const marked = truncated.mark !== 'none';
+  if (marked) return certain || failure.matched > 0 || !several || (count > 1 && isTranscendental(f, best.choice.setting.variable));
+  if (!isTranscendental(f, best.choice.setting.variable)) return false;
+  if (claim.relation === '=') return count >= 2 && failure.matched >= 1;
+  return failure.matched >= 1 || (certain && count >= 1 && failure.difference !== null);
+}
+
+function meant(claim: Claim, f: Expression, setting: Setting): boolean {
+  return hasMarks(claim.side) || (claim.relation !== '=' && isTranscendental(f, setting.variable));
+}
+
+function holding(claim: Claim, f: Expression, setting: Setting, judgement: Extract<Judgement, { kind: 'holds' }>, place: Place, presumed: string | undefined): Finding | null {
+  if (claim.relation === '=' && judgement.truncated.mark === 'none' && (!isTranscendental(f, setting.variable) || judgement.truncated.terms.length === 0)) return null;
+  const suffix = presumed === undefined ? '' : ` (taken as ${presumed})`;
+  const base = { ...claim.span, claim: claim.span, verdict: 'holds' as const, found: '', fix: null, ...labelOf(place) };
+  const { hint } = judgement;
+  if (!hint) return { ...base, severity: 'none', reason: `Holds: every printed term agrees with the expansion${suffix}.` };
+  const { place: at, reason } = hintText(claim, hint, judgement, setting);
+  return { ...base, ...at, severity: 'hint', reason: `Holds${suffix}. ${reason}` };
+}
+
+function hintText(claim: Claim, hint: Hint, judgement: Extract<Judgement, { kind: 'holds' }>, setting: Setting): { readonly place: Span; readonly reason: string } {
+  const order = judgement.truncated.orders[0];
+  switch (hint.kind) {
+    case 'weak': {
+      const power = Q.toText(hint.difference.power);
+      const reached = setting.point === 'inf' || setting.point === '-inf' ? `the power -${power} of ${setting.variable}` : `the power ${power}`;
+      return { place: order?.argument.span ?? claim.span, reason: `The difference is smaller than stated: it is of order ${reached}.` };
+    }
+    case 'absorbed':
+      return { place: hint.term.node.span ?? claim.span, reason: 'This term is not larger than the stated remainder, which absorbs it.' };
+    case 'approximation':
+      return { place: claim.span, reason: 'The two sides are not equal; an approximation sign or a remainder is meant.' };
+  }
+}
+
+function undecided(claim: Claim, place: Place, reason: string): Finding {
+  return { ...claim.span, claim: claim.span, verdict: 'undecided', severity: 'hint', reason, found: '', fix: null, ...labelOf(place) };
+}
+
+export const unresolved = (claim: Claim, place: Place): Finding =>
+  undecided(claim, place, `The left side ${claim.name ? toPlain(claim.name) : ''} is only a name, and its definition does not stand in this document.`);
+
+function failing(claim: Claim, f: Expression, setting: Setting, judgement: Extract<Judgement, { kind: 'fails' }>, place: Place): Finding {
+  const notation = notationOf(place.text.slice(place.formula.span.start, place.formula.span.end), place.formula.notation);
+  const found = blame({ truth: f, relation: claim.relation, truncated: judgement.truncated, failure: judgement.failure, setting, notation, text: place.text });
+  return { start: found.place.start, end: found.place.end, claim: claim.span, verdict: 'fails', severity: 'error', reason: found.message, found: found.found, fix: found.fix, ...labelOf(place) };
+}
+
+const labelOf = (place: Place): { readonly label?: string } => (place.formula.label === null ? {} : { label: place.formula.label });
+export const namesIn = (e: Expression): readonly string[] => freeSymbols(e);

@@ -1,0 +1,96 @@
+/** The formulas of a document that may hold claims: mathematics, Markdown, comments of code, plain lines. */
+import { type Expression, type Span, walk } from '../expression/index.ts';
+import { type DocumentContent, type Formula, type MacroTable, readDocument, readFormula, type Region } from '../read/index.ts';
+
+export interface FoundFormula {
+  readonly span: Span;
+  readonly notation: 'latex' | 'plain';
+  readonly formula: Formula;
+  /** Stands in running text. */
+  readonly inline: boolean;
+  readonly label: string | null;
+}
+export interface UnreadFormula extends Span {
+  readonly reason: string;
+}
+export interface Formulas {
+  readonly found: readonly FoundFormula[];
+  readonly unread: readonly UnreadFormula[];
+  readonly content: DocumentContent;
+}
+
+/** Formulas in order of appearance. A text without any mathematics marked as such is read as one formula. */
+export function formulasOf(text: string, language: string, options: { readonly fileName?: string; readonly macros?: MacroTable }): Formulas {
+  const content = readDocument(text, language, options);
+  const found: FoundFormula[] = [];
+  const unread: UnreadFormula[] = [];
+  const read = (span: Span, notation: 'latex' | 'plain', inline: boolean, label: string | null, quiet: boolean): boolean => {
+    const outcome = readFormula(text, notation, { start: span.start, end: span.end, macros: content.macros, joinRows: true });
+    if (outcome.ok) {
+      found.push({ span, notation, formula: outcome.value, inline, label });
+      return true;
+    }
+    if (!quiet) unread.push({ start: outcome.error.start ?? span.start, end: Math.max(outcome.error.end ?? span.end, (outcome.error.start ?? span.start) + 1), reason: outcome.error.message });
+    return false;
+  };
+  for (const region of content.regions) {
+    if (region.kind === 'code') continue;
+    if (region.kind === 'comment') for (const place of commentFormulas(text, region)) read(place, place.notation, true, null, true);
+    else if (region.kind === 'text') for (const place of proseFormulas(text, region.contentStart, region.contentEnd)) read(place, 'plain', true, null, true);
+    else for (const place of region.formulas) read({ start: place.start, end: place.end }, region.language === 'plain' ? 'plain' : 'latex', region.kind === 'inline', place.label ?? region.label ?? place.tag ?? region.tag ?? null, false);
+  }
+  if (found.length === 0 && unread.length === 0 && content.regions.length === 0 && text.trim() !== '') read({ start: 0, end: text.length }, language === 'plain' && !text.includes('\\') ? 'plain' : 'latex', false, null, false);
+  return { found, unread, content };
+}
+
+interface Place extends Span {
+  readonly notation: 'latex' | 'plain';
+}
+
+/** Formulas in a comment: marked LaTeX where there is any, else lines with a relation. */
+function commentFormulas(text: string, region: Region): readonly Place[] {
+  const out: Place[] = [];
+  const content = text.slice(region.contentStart, region.contentEnd);
+  for (const match of content.matchAll(/\$\$([\s\S]+?)\$\$|\$([^$\n]+)\$|\\\(([\s\S]+?)\\\)|\\\[([\s\S]+?)\\\]|\\f\$([^\n]+?)\\f\$/g)) {
+    const inner = match.slice(1).find((g) => g !== undefined) ?? '';
+    const start = region.contentStart + match.index + match[0].indexOf(inner);
+    out.push({ start, end: start + inner.length, notation: 'latex' });
+  }
+  return out.length > 0 ? out : proseFormulas(text, region.contentStart, region.contentEnd);
+}
+
+const RELATION = /~=|≈|∼|≃|(?<![<>=!:+\-*/])=(?!=)|\\approx|\\sim(?:eq)?(?![a-z])|(?<=\s)~(?=\s)/;
+
+/** In each line with a relation, the longest stretch that is a formula. */
+function proseFormulas(text: string, from: number, to: number): readonly Place[] {
+  const out: Place[] = [];
+  for (let start = from; start < to; ) {
+    const newline = text.indexOf('\n', start);
+    const end = newline < 0 || newline > to ? to : newline;
+    const place = formulaInLine(text, start, end);
+    if (place) out.push(place);
+    start = end + 1;
+  }
+  return out;
+}
+
+function formulaInLine(text: string, start: number, end: number): Place | null {
+  const line = text.slice(start, end);
+  const relation = RELATION.exec(line);
+  if (!relation || line.length > 2000) return null;
+  const notation = line.includes('\\') ? 'latex' : 'plain';
+  const lead = /^[\s*/!#%;>-]*/.exec(line)?.[0].length ?? 0;
+  const starts = [lead, ...[...line.slice(lead, relation.index).matchAll(/[:;,]\s+|\s+|(?<=\w)\(/g)].map((m) => lead + m.index + m[0].length)];
+  for (const at of new Set(starts)) {
+    if (at >= relation.index) continue;
+    const outcome = readFormula(text, notation, { start: start + at, end });
+    if (outcome.ok && outcome.value.expression.kind === 'relation' && !isWordy(outcome.value.expression, text)) return { start: start + at, end, notation };
+  }
+  return null;
+}
+
+/** Words of running text that were read as symbols. */
+function isWordy(e: Expression, text: string): boolean {
+  const words = [...walk(e)].filter((n) => (n.kind === 'symbol' || n.kind === 'apply') && /^[A-Za-z]{3,}$/.test(n.name) && n.span && /^[A-Za-z]{3,}$/.test(text.slice(n.span.start, n.span.start + n.name.length)));
+  return words.length > 1;
+}

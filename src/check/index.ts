@@ -1,0 +1,171 @@
+/** The door of check/: claims in a document or a single formula, judged. */
+import { build, type Assumption, type Expression, type RelationNode } from '../expression/index.ts';
+import { attempt, type Budget, Declined, type Outcome } from '../outcome.ts';
+import type { Finding } from '../protocol.ts';
+import { type MacroTable, readExact, readExpression, readNotes, readVariable, settingsAt } from '../read/index.ts';
+import { type Claim, claimsOf } from './claims.ts';
+import { type Definitions, definitionsIn, resolve } from './definitions.ts';
+import { findingOf, unresolved, type Place } from './findings.ts';
+import { type FoundFormula, formulasOf } from './formulas.ts';
+import { quantitiesNamed } from './quantities.ts';
+import type { Asked } from './setting.ts';
+import { hasMarks } from './truncated.ts';
+
+export interface CheckParts {
+  readonly text: string;
+  readonly language: string;
+  readonly fileName?: string;
+  /** As a request names them; absent: found from the text. */
+  readonly variable?: string;
+  readonly point?: string;
+  readonly side?: 'both' | 'right' | 'left';
+  /** The function, where the text holds only its expansion: a formula, an equation that defines it, `derivative of ...`. */
+  readonly of?: string;
+  readonly assumptions?: readonly Assumption[];
+  /** Macros of files that the document includes. */
+  readonly macros?: MacroTable;
+}
+
+export interface Checked {
+  readonly findings: readonly Finding[];
+  readonly unread: readonly { readonly start: number; readonly end: number; readonly reason: string }[];
+}
+
+/** Longest time that one claim may take of what is left, so that one hard claim does not starve the others. */
+const SHARE = 0.25;
+
+/**
+ * Every claim of the text with its verdict, in order. What cannot be read is listed as unread and never fails. Fails with `bad-request` for a variable, point or
+ * function that cannot be read. Claims that the time does not reach are undecided with that reason.
+ */
+export function check(parts: CheckParts, budget: Budget): Outcome<Checked> {
+  return attempt(() => {
+    const asked = readAsked(parts, budget);
+    const given = parts.of === undefined ? null : readGiven(parts.of, asked.variable);
+    const { found, unread } = formulasOf(parts.text, parts.language, parts);
+    const notes = readNotes(parts.text, parts.language, parts.fileName);
+    const definitions = definitionsIn(found);
+    const findings: Finding[] = [];
+    for (const formula of found) {
+      const note = settingsAt(notes, formula.span.start);
+      if (note.skip === true) continue;
+      const place: Place = { text: parts.text, formula, around: aroundOf(parts.text, formula) };
+      for (const claim of claimsIn(formula, given)) {
+        const time = share(budget);
+        const local = withNote({ ...asked, budget: time }, note, parts);
+        try {
+          const finding = checkClaim(claim, given, definitions, local, place);
+          if (finding) findings.push(finding);
+        } catch (error) {
+          if (!(error instanceof Declined)) throw error;
+          findings.push({ ...claim.span, claim: claim.span, verdict: 'undecided', severity: 'hint', reason: error.failure.message, found: '', fix: null });
+        }
+      }
+    }
+    return { findings, unread };
+  });
+}
+
+function claimsIn(formula: FoundFormula, given: Expression | null): readonly Claim[] {
+  const { expression, conditions } = formula.formula;
+  const chains = [expression, ...conditions].filter((e): e is RelationNode => e.kind === 'relation');
+  if (expression.kind !== 'relation' && given && hasMarks(expression)) {
+    const span = expression.span ?? formula.span;
+    return [{ function: given, name: null, side: expression, relation: '=', span, neighbour: null }];
+  }
+  return chains.flatMap(claimsOf);
+}
+
+function checkClaim(claim: Claim, given: Expression | null, definitions: Definitions, asked: Asked, place: Place): Finding | null {
+  if (claim.function) return findingOf(claim, claim.function, asked, place);
+  if (given) return findingOf(claim, given, asked, place);
+  if (!claim.name) return null;
+  let failed: Finding | null = null;
+  for (const value of resolve(definitions, claim.name, place.formula.span.start)) {
+    const finding = findingOf(claim, value, asked, place);
+    if (finding?.verdict === 'holds') return finding;
+    failed ??= finding;
+  }
+  if (failed) return failed;
+  const printed = place.text.slice(claim.name.span?.start ?? 0, claim.name.span?.end ?? 0).replace(/\s/g, '');
+  for (const quantity of quantitiesNamed(printed, symbolsOf(claim.side))) {
+    const variable = asked.variable ?? build.symbol(quantity.variable);
+    const finding = findingOf(claim, quantity.value, { ...asked, variable, point: asked.point ?? build.number(0) }, place, { lenient: quantity.title });
+    if (finding?.verdict === 'holds') return finding;
+  }
+  return hasMarks(claim.side) || claim.relation === 'about' ? unresolved(claim, place) : null;
+}
+
+function symbolsOf(e: Expression): readonly string[] {
+  const names = new Set<string>();
+  const visit = (node: Expression): void => {
+    if (node.kind === 'symbol') names.add(node.name);
+    else if (node.kind === 'sum') node.terms.forEach(visit);
+    else if (node.kind === 'product') node.factors.forEach(visit);
+    else if (node.kind === 'quotient') [node.numerator, node.denominator].forEach(visit);
+    else if (node.kind === 'negation') visit(node.operand);
+    else if (node.kind === 'power') [node.base, node.exponent].forEach(visit);
+    else if (node.kind === 'call') node.args.forEach(visit);
+    else if (node.kind === 'order') visit(node.argument);
+  };
+  visit(e);
+  return [...names];
+}
+
+function readAsked(parts: CheckParts, budget: Budget): Asked {
+  const variable = parts.variable === undefined ? null : need(readVariable(parts.variable), 'variable');
+  return { variable, point: parts.point === undefined ? null : readPoint(parts.point), side: parts.side ?? 'both', assumptions: parts.assumptions ?? [], budget };
+}
+
+function readPoint(text: string): Expression | 'inf' | '-inf' {
+  const plain = text.replace(/\s/g, '');
+  if (/^\+?(?:inf|infinity|∞|\\infty)$/.test(plain)) return 'inf';
+  if (/^[-−](?:inf|infinity|∞|\\infty)$/.test(plain)) return '-inf';
+  return need(readExact(text), 'point');
+}
+
+function need<T>(outcome: Outcome<T>, what: string): T {
+  if (!outcome.ok) throw new Declined('bad-request', `The ${what} cannot be read: ${outcome.error.message}`);
+  return outcome.value;
+}
+
+const PHRASE = /^\s*(?:the\s+)?(first|second|third)?\s*(derivative|integral|antiderivative)\s+of\s+/i;
+
+/** A formula, the right side of an equation, or a derivative or integral in words. */
+function readGiven(text: string, variable: Expression | null): Expression {
+  const phrase = PHRASE.exec(text);
+  const rest = phrase ? text.slice(phrase[0].length) : text;
+  const read = need(readExpression(rest, rest.includes('\\') ? 'latex' : 'plain'), 'function');
+  const value = read.kind === 'relation' ? (read.sides.at(-1) ?? read) : read;
+  if (!phrase) return value;
+  const symbols = symbolsOf(value);
+  const by = variable?.kind === 'symbol' ? variable : build.symbol(symbols[0] ?? 'x');
+  if (/integral|antiderivative/i.test(phrase[2] ?? '')) return { kind: 'integral', body: value, variable: by };
+  const times = phrase[1] === undefined ? 1 : ['first', 'second', 'third'].indexOf(phrase[1].toLowerCase()) + 1;
+  return { kind: 'derivative', body: value, variable: by, times };
+}
+
+function withNote(asked: Asked, note: ReturnType<typeof settingsAt>, parts: CheckParts): Asked {
+  const variable = asked.variable ?? (note.variable === undefined ? null : valueOf(readVariable(note.variable)));
+  const point = asked.point ?? (parts.variable === undefined && note.point !== undefined ? readPoint(note.point) : null);
+  return { ...asked, variable, point, side: parts.side ?? note.side ?? 'both' };
+}
+const valueOf = <T>(outcome: Outcome<T>): T | null => (outcome.ok ? outcome.value : null);
+
+const REACH = 240;
+function aroundOf(text: string, formula: FoundFormula): Place['around'] {
+  return { conditions: formula.formula.conditions, before: text.slice(Math.max(0, formula.span.start - REACH), formula.span.start), after: text.slice(formula.span.end, formula.span.end + REACH) };
+}
+
+/** A part of the remaining time, never none. */
+function share(whole: Budget): Budget {
+  const end = performance.now() + Math.max(20, whole.remaining() * SHARE);
+  return {
+    deadline: Math.min(end, whole.deadline),
+    remaining: () => Math.min(end - performance.now(), whole.remaining()),
+    check() {
+      whole.check();
+      if (performance.now() > end) throw new Declined('over-budget', 'This claim took too long to judge; allow more time.');
+    },
+  };
+}

@@ -1,0 +1,165 @@
+/** In which quantity, and at which point, a claim is an expansion: from the request, from marks and words around, else from its own powers. */
+import { build, dependsOn, freeSymbols, Q, walk, type Assumption, type Expression } from '../expression/index.ts';
+import type { Budget } from '../outcome.ts';
+import { candidates } from '../read/index.ts';
+import type { Setting } from './context.ts';
+import { numberOf } from './size.ts';
+import { withoutMarks } from './truncated.ts';
+
+export interface Asked {
+  readonly variable: Expression | null;
+  readonly point: Expression | 'inf' | '-inf' | null;
+  readonly side: 'both' | 'right' | 'left';
+  readonly assumptions: readonly Assumption[];
+  readonly budget: Budget;
+}
+export interface Around {
+  readonly conditions: readonly Expression[];
+  readonly before: string;
+  readonly after: string;
+}
+
+export interface Choice {
+  readonly setting: Setting;
+  /** The text or the request says so; a guess is only held against a claim that is plainly meant as an expansion. */
+  readonly certain: boolean;
+}
+
+const ZERO = build.number(0);
+
+/** The settings in which to judge the claim, likeliest first; empty where nothing varies. */
+export function settingsFor(f: Expression, side: Expression, asked: Asked, around: Around): readonly Choice[] {
+  const make = (variable: string, point: Expression | 'inf' | '-inf', certain: boolean): Choice => ({
+    certain,
+    setting: { variable, point, side: asked.side, assumptions: [...asked.assumptions, ...positive([f, side], variable, asked.assumptions)], budget: asked.budget },
+  });
+  const orders = [...walk(side), ...walk(f)].filter((n) => n.kind === 'order');
+  const named = asked.variable ? carrier(asked.variable, f, side) : null;
+  const found = candidates(build.sum(f, withoutMarks(side)), { orders, conditions: around.conditions, before: around.before, after: around.after }).found;
+  const foundName = found ? carrier(found.variable.expression, f, side) : null;
+  const certain = found !== null && found.from !== 'only symbol' && found.from !== 'only ratio';
+  const foundPoint = found ? (found.point.kind === 'constant' && found.point.name === 'infinity' ? 'inf' : found.point) : null;
+  if (named !== null) {
+    if (asked.point) return [make(named, asked.point, true)];
+    if (foundName === named && foundPoint && certain) return [make(named, foundPoint, true)];
+    return pointsFor(side, named).map((p, i) => make(named, p, i === 0 && asked.variable !== null));
+  }
+  if (foundName !== null && foundPoint && certain) return [make(foundName, asked.point ?? foundPoint, true)];
+  const names = foundName !== null ? [foundName] : likelyVariables(f, side);
+  return names.flatMap((name) => (asked.point ? [make(name, asked.point, true)] : pointsFor(side, name).map((p) => make(name, p, false))));
+}
+
+/** A ratio v/c is small where v is: its first symbol above the bar that both sides show carries it. */
+function carrier(variable: Expression, f: Expression, side: Expression): string | null {
+  const above = variable.kind === 'quotient' ? variable.numerator : variable;
+  const names = freeSymbols(above).filter((name) => dependsOn(f, name) || dependsOn(side, name));
+  return names.find((name) => dependsOn(f, name)) ?? names[0] ?? null;
+}
+
+/** Parameters are taken as positive, as authors silently do; a claim that needs it says so. */
+function positive(sides: readonly Expression[], variable: string, known: readonly Assumption[]): readonly Assumption[] {
+  const names = new Set(sides.flatMap((s) => freeSymbols(s)));
+  names.delete(variable);
+  const spoken = new Set(known.flatMap((a) => (a.kind === 'relation' ? [...freeSymbols(a.left), ...freeSymbols(a.right)] : [])));
+  return [...names].filter((n) => !spoken.has(n)).map((n) => ({ kind: 'relation', left: build.symbol(n), relation: '>', right: ZERO }));
+}
+
+/** Symbols in whose powers the printed side runs, most distinct powers first, and which the function holds too. */
+function likelyVariables(f: Expression, side: Expression): readonly string[] {
+  const kept = withoutMarks(side);
+  const names = freeSymbols(kept).filter((name) => dependsOn(f, name));
+  const scored = names.map((name) => ({ name, powers: powersOf(kept, name), order: freeSymbols(f).indexOf(name) }));
+  return scored
+    .filter((s) => s.powers.size > 0)
+    .sort((a, b) => b.powers.size - a.powers.size || a.order - b.order)
+    .map((s) => s.name)
+    .slice(0, 3);
+}
+
+function powersOf(e: Expression, name: string): ReadonlySet<string> {
+  const found = new Set<string>();
+  for (const node of walk(e)) {
+    if (node.kind === 'symbol' && node.name === name) found.add('1');
+    if (node.kind === 'power' && node.base.kind === 'symbol' && node.base.name === name) found.add(JSON.stringify(numberOf(node.exponent), (_, v: unknown) => (typeof v === 'bigint' ? `${v}` : v)) ?? '');
+  }
+  return found;
+}
+
+/** Points that the printed powers suggest: a where powers of x - a stand, infinity where they fall, else 0. */
+function pointsFor(side: Expression, name: string): readonly (Expression | 'inf')[] {
+  const kept = withoutMarks(side);
+  const shift = shiftIn(kept, name);
+  if (shift) return [shift];
+  const terms = kept.kind === 'sum' ? kept.terms : kept.kind === 'product' ? (kept.factors.find((factor) => factor.kind === 'sum' && dependsOn(factor, name)) ?? kept).kind === 'sum' ? sumTerms(kept.factors.find((factor) => factor.kind === 'sum' && dependsOn(factor, name))) : [kept] : [kept];
+  const exponents = terms.map((t) => exponentOf(t, name)).filter((e) => e !== null);
+  const [first] = exponents;
+  const last = exponents.at(-1);
+  if (first !== undefined && last !== undefined && last < first) return ['inf', ZERO];
+  return first !== undefined && exponents.length === 1 && first < 0 ? ['inf', ZERO] : [ZERO, 'inf'];
+}
+
+const sumTerms = (e: Expression | undefined): readonly Expression[] => (e?.kind === 'sum' ? e.terms : e ? [e] : []);
+
+function exponentOf(e: Expression, name: string): number | null {
+  switch (e.kind) {
+    case 'negation':
+      return exponentOf(e.operand, name);
+    case 'symbol':
+      return e.name === name ? 1 : 0;
+    case 'number':
+    case 'constant':
+      return 0;
+    case 'product':
+      return e.factors.reduce<number | null>((sum, factor) => add(sum, exponentOf(factor, name)), 0);
+    case 'quotient':
+      return add(exponentOf(e.numerator, name), negate(exponentOf(e.denominator, name)));
+    case 'power': {
+      const exponent = numberOf(e.exponent);
+      const base = exponentOf(e.base, name);
+      return exponent && base !== null ? Q.toDouble(exponent) * base : dependsOn(e, name) ? null : 0;
+    }
+    default:
+      return dependsOn(e, name) ? null : 0;
+  }
+}
+const add = (a: number | null, b: number | null): number | null => (a === null || b === null ? null : a + b);
+const negate = (a: number | null): number | null => (a === null ? null : -a);
+
+/** The a of powers of (x - a), where x occurs in no other way in the sum. */
+function shiftIn(e: Expression, name: string): Expression | null {
+  const shifts: Expression[] = [];
+  let loose = false;
+  const visit = (node: Expression): void => {
+    if (node.kind === 'sum' && node.terms.length === 2 && node !== e) {
+      const [a, b] = node.terms;
+      if (a?.kind === 'symbol' && a.name === name && b && !dependsOn(b, name)) {
+        shifts.push(b.kind === 'negation' ? b.operand : build.negation(b));
+        return;
+      }
+    }
+    if (node.kind === 'symbol' && node.name === name) loose = true;
+    else for (const child of [...childrenOf(node)]) visit(child);
+  };
+  visit(e);
+  const [first] = shifts;
+  return first && !loose ? first : null;
+}
+const childrenOf = (node: Expression): readonly Expression[] => {
+  switch (node.kind) {
+    case 'sum':
+      return node.terms;
+    case 'product':
+      return node.factors;
+    case 'quotient':
+      return [node.numerator, node.denominator];
+    case 'negation':
+      return [node.operand];
+    case 'power':
+      return [node.base, node.exponent];
+    case 'call':
+    case 'apply':
+      return node.args;
+    default:
+      return [];
+  }
+};

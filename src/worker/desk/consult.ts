@@ -1,19 +1,26 @@
 /** An expansion at a place in a document: weighs what was chosen, noted, remembered and set, asks the engine, and says where each part came from. */
 import type { Engine } from '../../engine.ts';
 import type { Detail, ErrorAnswer, ExpandAnswer, ExpandRequest } from '../../protocol.ts';
-import { candidatesIn } from './candidates.ts';
-import { readNotes } from './notes.ts';
-import type { ConsultAnswer, ConsultRequest, NoteReading, Question, Source, Sources } from './types.ts';
+import { settingsAt } from '../../read/index.ts';
+import { notesOf, questionOf } from './notes.ts';
+import type { ConsultAnswer, ConsultRequest, Question, Source, Sources } from './types.ts';
 
 export async function consult(request: ConsultRequest, engine: Engine): Promise<ConsultAnswer> {
   const { text, language, selection } = request;
-  const notes = text.includes('leading-order:') ? readNotes(text, language) : [];
-  const { above, file } = notesFor(notes, text, selection.start, selection.end);
-  if (above?.skip) return declined('A note above says to skip this formula.');
+  const notes = notesOf(text, language);
+  const above = settingsAt(
+    notes.filter((note) => note.scope === 'next'),
+    selection.start,
+  );
+  const file = settingsAt(
+    notes.filter((note) => note.scope === 'file'),
+    selection.start,
+  );
+  if (above.skip) return declined('A note above says to skip this formula.');
   const { asked, sources } = weigh([
     ['chosen', request.chosen ?? {}],
-    ['note', above?.question ?? {}],
-    ['fileNote', file?.question ?? {}],
+    ['note', questionOf(above)],
+    ['fileNote', questionOf(file)],
     ['remembered', request.remembered ?? {}],
   ]);
   const told = { ...request.setting };
@@ -35,8 +42,8 @@ export async function consult(request: ConsultRequest, engine: Engine): Promise<
       asked: question,
       sources: complete(question, { ...sources, variable }, request),
       place: reading ? { start: reading.start, end: reading.end } : placeOf(answer, request),
-      candidates: reading && reading.candidates.length > 0 ? reading.candidates : candidatesIn(text, language, selection),
-      worthwhile: !answer.ok || above !== undefined || saysSomething(answer),
+      candidates: (answer.ok ? reading?.candidates : answer.error.candidates) ?? [],
+      worthwhile: !answer.ok || Object.keys(above).length > 0 || saysSomething(answer),
     };
   }
   return declined('Nothing could be asked about this place; select an expression.');
@@ -103,32 +110,3 @@ const mentions = (text: string, symbol: string, start: number, end: number): boo
   const around = text.slice(Math.max(0, start - 400), end + 400);
   return symbol !== '' && around.includes(symbol);
 };
-
-/** The note directly above the place (only blank lines, comments and the opening of a display between), and the last one for the file before it. */
-function notesFor(notes: readonly NoteReading[], text: string, start: number, end: number): { readonly above: NoteReading | undefined; readonly file: NoteReading | undefined } {
-  const readable = notes.filter((note) => note.problem === null && note.end <= Math.max(start, end) + 0);
-  const above = readable.findLast((note) => isDirectlyAbove(text.slice(note.end, start)));
-  const file = readable.findLast((note) => note !== above && isAlone(text, note));
-  return { above, file };
-}
-
-/** Between a note and the formula it serves stands nothing but what opens the formula, and the formula's own beginning. */
-function isDirectlyAbove(between: string): boolean {
-  const lines = between.split('\n').slice(1);
-  if (lines.length === 0) return false;
-  const own = lines.pop() ?? '';
-  const opened = lines.findIndex((line) => /^\s*(\\begin\{|\\\[|\$\$)/.test(line));
-  const before = opened < 0 ? lines : lines.slice(0, opened);
-  const inside = opened < 0 ? [] : lines.slice(opened + 1);
-  if (!before.every((line) => /^\s*($|%|#|\/\/|!|<!--|-->|\\label)/.test(line))) return false;
-  // In prose a note above a display serves all of that display.
-  if (opened >= 0) return inside.every((line) => !/\\end\{(equation|align|gather|multline|eqnarray)|\\\]|^\s*\$\$|^\s*$/.test(line)) && !/\\end\{(equation|align|gather|multline|eqnarray)/.test(own);
-  return true;
-}
-
-/** A note that serves a file stands at its head or is followed by an empty line. */
-function isAlone(text: string, note: NoteReading): boolean {
-  const after = text.slice(note.end, note.end + 200);
-  const head = text.slice(0, note.start).split('\n').length <= 3;
-  return head || /^[^\n]*\n[^\S\n]*\n/.test(after);
-}

@@ -1,7 +1,7 @@
 /** What an editor asks beyond the engine's protocol, answered where the engine lives. */
 import type { Engine } from '../../engine.ts';
 import { consult } from './consult.ts';
-import { readNotes } from './notes.ts';
+import { noteReadings } from './notes.ts';
 import { createPictureMaker } from './picture/index.ts';
 import { proposals } from './proposals/index.ts';
 import type { DeskAnswer, DeskRequest } from './types.ts';
@@ -22,7 +22,7 @@ export function createDesk(room: { readonly engine: Engine; readonly loadFile: (
       case 'picture':
         return pictures.picture(request);
       case 'notes':
-        return { notes: readNotes(request.text, request.language) };
+        return { notes: noteReadings(request.text, request.language) };
     }
   };
   return {

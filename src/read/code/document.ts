@@ -4,6 +4,7 @@ import type { GrammarStore } from './grammar/loader.ts';
 import { capture, type Raw } from './grammar/raw.ts';
 import type { CodeLanguage } from './languages/index.ts';
 import { parseByPrecedence } from './precedence/index.ts';
+import { repairCasts } from './repair.ts';
 import type { Program } from './syntax.ts';
 
 interface Wrap {
@@ -47,19 +48,19 @@ export function parseProgram(text: string, language: CodeLanguage, store: Gramma
   const wraps = WRAPS[language.family];
   const short = text.length <= LONGEST_FRAGMENT;
   if (wraps && short && !/[;{}]/.test(text) && language.family !== 'python' && language.family !== 'javascript') {
-    const wrapped = parseWrapped(text, 0, text.length, wraps.expression, grammar, store, false);
+    const wrapped = parseWrapped(text, 0, text.length, wraps.expression, language, grammar, store);
     if (wrapped) return wrapped;
   }
   const tree = store.parseDocument(grammar, text);
   if (!tree) return parseByPrecedence(text, language, 0, text.length);
   if (tree.rootNode.hasError && short && wraps) {
     for (const wrap of [wraps.expression, wraps.statements, wraps.members]) {
-      const wrapped = wrap ? parseWrapped(text, 0, text.length, wrap, grammar, store, false) : null;
+      const wrapped = wrap ? parseWrapped(text, 0, text.length, wrap, language, grammar, store) : null;
       if (wrapped) return wrapped;
     }
   }
   const skip = focus && text.length > LONGEST_WHOLE ? BODIES : null;
-  return lowerTree(capture(tree, 0, skip, focus), text);
+  return repairCasts(lowerTree(capture(tree, 0, skip, focus), text), text, language);
 }
 
 /** The program of a piece of a document that is an expression by itself; offsets are those of the document. Null where it is none. */
@@ -67,20 +68,20 @@ export function parseFragment(text: string, start: number, end: number, language
   const { grammar } = language;
   const wraps = WRAPS[language.family];
   if (grammar && wraps && store?.ready(grammar) && end - start <= LONGEST_FRAGMENT) {
-    const wrapped = parseWrapped(text, start, end, wraps.expression, grammar, store, false);
+    const wrapped = parseWrapped(text, start, end, wraps.expression, language, grammar, store);
     if (wrapped) return wrapped;
   }
   return parseByPrecedence(text, language, start, end);
 }
 
-function parseWrapped(text: string, start: number, end: number, wrap: Wrap, grammar: string, store: GrammarStore, tolerant: boolean): Program | null {
+function parseWrapped(text: string, start: number, end: number, wrap: Wrap, language: CodeLanguage, grammar: string, store: GrammarStore): Program | null {
   return store.withTree(grammar, wrap.before + text.slice(start, end) + wrap.after, (tree) => {
-    if (tree.rootNode.hasError && !tolerant) return null;
+    if (tree.rootNode.hasError) return null;
     const inside = nodeAt(capture(tree, wrap.before.length - start), start - 1);
     if (!inside) return null;
     const program = lowerTree(inside, text);
     const { root } = program;
-    return { ...program, root: root.kind === 'group' ? root.inner : root };
+    return repairCasts({ ...program, root: root.kind === 'group' ? root.inner : root }, text, language);
   });
 }
 

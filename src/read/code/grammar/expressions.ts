@@ -3,7 +3,14 @@ import type { Code } from '../syntax.ts';
 import { child, childrenOf, type Lowering, namedChildren, opaque, place, type Rule } from './rules.ts';
 import type { Raw } from './raw.ts';
 
-const literal: Rule = (raw, at) => ({ kind: 'literal', text: at.textOf(raw), ...place(raw) });
+/** The grammars of C and C++ take a sign into the literal. */
+const literal: Rule = (raw, at) => {
+  const written = at.textOf(raw);
+  const sign = /^[-+]\s*/.exec(written);
+  if (!sign) return { kind: 'literal', text: written, ...place(raw) };
+  const operand: Code = { kind: 'literal', text: written.slice(sign[0].length), start: raw.start + sign[0].length, end: raw.end };
+  return { kind: 'unary', operator: written.slice(0, 1), operand, ...place(raw) };
+};
 const name: Rule = (raw, at) => ({ kind: 'name', text: at.textOf(raw), ...place(raw) });
 
 /** The only expression inside brackets; several (a comma expression) stay opaque. */

@@ -226,6 +226,14 @@ export class Parser {
         continue;
       }
       const following = this.peek(1);
+      const typed = token.text === '<' && (code.kind === 'name' || code.kind === 'member') ? this.#typeArguments() : null;
+      if (typed) {
+        const cast = code.kind === 'name' && /_cast$/.test(code.text);
+        const [operand, ...more] = cast ? this.list() : [];
+        if (cast) code = operand && more.length === 0 ? { kind: 'cast', type: typed.text, operand, start: code.start, end: this.lastEnd } : this.#opaque(code.start, 'cast');
+        else code = { ...code, end: typed.end };
+        continue;
+      }
       if (token.kind === 'operator' && /^(?:\.|::|\?\.|->|%|\$)$/.test(token.text) && following.kind === 'name' && this.#selects(token)) {
         this.next();
         const name = this.next();
@@ -250,6 +258,22 @@ export class Parser {
       }
       return code;
     }
+  }
+
+  /** `<double>` between a name and a bracket, in the languages that have it; taken only where it is there. */
+  #typeArguments(): { readonly text: string; readonly end: number } | null {
+    if (!['cpp', 'csharp', 'java', 'rust'].includes(this.language.family)) return null;
+    let text = '';
+    for (let i = 1; i < 12; i += 1) {
+      const token = this.peek(i);
+      if (token.text === '>' && text !== '' && this.peek(i + 1).text === '(') {
+        for (let k = 0; k <= i; k += 1) this.next();
+        return { text, end: token.end };
+      }
+      if (token.kind !== 'name' && !/^(?:::|,|\*|&|\.)$/.test(token.text)) return null;
+      text += `${text === '' ? '' : ' '}${token.text}`;
+    }
+    return null;
   }
 
   #memberFollows(): boolean {

@@ -1,5 +1,5 @@
 /** Which quantity is small (or large), and near which point: from what the text around says, else a list to choose from. */
-import { build, children, type Expression, freeSymbols, Q } from '../expression/index.ts';
+import { build, children, dependsOn, type Expression, freeSymbols, Q, type Rational, walk } from '../expression/index.ts';
 import { rationalOf } from './exact.ts';
 import { maximalMonomials, type Monomial, monomialKey, monomialOf, primitive } from './monomial.ts';
 
@@ -28,6 +28,8 @@ export interface Surroundings {
   /** O-terms of the formula or document. */
   readonly orders?: readonly Expression[];
   readonly conditions?: readonly Expression[];
+  /** Sides of the same chain that are truncated expansions: their powers tell small from large. */
+  readonly expansions?: readonly Expression[];
   /** Running text before and after the formula, a few hundred characters. */
   readonly before?: string;
   readonly after?: string;
@@ -50,13 +52,71 @@ export function candidates(expression: Expression, around: Surroundings = {}): C
     const found = fromCondition(condition, ratios);
     if (found && known(freeSymbols(found.variable.expression))) return { found, list };
   }
-  const worded = fromText(around.after ?? '', symbols) ?? fromText(around.before ?? '', symbols);
+  const worded = fromText(around.after ?? '', symbols, ratios) ?? fromText(around.before ?? '', symbols, ratios);
   if (worded) return { found: worded, list };
-  const [only] = symbols;
-  if (symbols.length === 1 && only !== undefined) return { found: { variable: symbolCandidate(only), point: ZERO, from: 'only symbol' }, list };
+  // Symbols that only multiply the whole are no candidates: in E_0 \sqrt{1+\epsilon} only \epsilon is.
+  const core = withoutPrefactor(expression);
+  const active = core.flatMap(freeSymbols).filter((name, i, all) => all.indexOf(name) === i);
+  const [only] = active.length > 0 ? active : symbols;
+  if ((active.length > 0 ? active : symbols).length === 1 && only !== undefined) {
+    const point = isLarge(expression, only) || (around.expansions ?? []).some((e) => descends(e, only)) ? INFINITY : ZERO;
+    return { found: { variable: symbolCandidate(only), point, from: 'only symbol' }, list };
+  }
   const [ratio] = ratios;
-  if (ratios.length === 1 && ratio && new Set(freeSymbols(ratio.expression)).size === symbols.length && coversAll(expression, ratio)) return { found: { variable: ratio, point: ZERO, from: 'only ratio' }, list };
+  if (ratios.length === 1 && ratio && core.every((part) => coversAll(part, ratio))) return { found: { variable: ratio, point: ZERO, from: 'only ratio' }, list };
   return { found: null, list };
+}
+
+/** What is left of an expression without factors that are monomials. */
+function withoutPrefactor(e: Expression): readonly Expression[] {
+  switch (e.kind) {
+    case 'negation':
+      return withoutPrefactor(e.operand);
+    case 'product':
+      return e.factors.filter((f) => monomialOf(f) === null).flatMap(withoutPrefactor);
+    case 'quotient':
+      return [e.numerator, e.denominator].filter((f) => monomialOf(f) === null).flatMap(withoutPrefactor);
+    default:
+      return monomialOf(e) === null ? [e] : [];
+  }
+}
+
+/** A number that counts: under a factorial, in a binomial or harmonic number, the upper limit of a sum. */
+function isLarge(e: Expression, name: string): boolean {
+  for (const n of walk(e)) {
+    if (n.kind === 'call' && /^(?:factorial|doubleFactorial|binomial|harmonic)$/.test(n.function) && n.args.some((a) => dependsOn(a, name))) return true;
+    if ((n.kind === 'indexedSum' || n.kind === 'indexedProduct') && dependsOn(n.upper, name)) return true;
+  }
+  return false;
+}
+
+/** The printed terms run from higher to lower powers of the symbol. */
+function descends(e: Expression, name: string): boolean {
+  const terms = e.kind === 'sum' ? e.terms : e.kind === 'product' ? (e.factors.find((f) => f.kind === 'sum') as Extract<Expression, { kind: 'sum' }> | undefined)?.terms ?? [] : [];
+  const powers = terms.filter((t) => t.kind !== 'order' && t.kind !== 'dots').map((t) => powerIn(t, name));
+  const first = powers[0];
+  const last = powers[powers.length - 1];
+  return powers.length > 1 && first !== undefined && last !== undefined && first !== null && last !== null && Q.compare(last, first) < 0;
+}
+
+/** Power of the symbol in one term, logarithms counted as power 0; null where it stands elsewhere too. */
+function powerIn(e: Expression, name: string): Rational | null {
+  if (!dependsOn(e, name)) return Q.ZERO;
+  switch (e.kind) {
+    case 'negation':
+      return powerIn(e.operand, name);
+    case 'product':
+      return e.factors.map((f) => powerIn(f, name)).reduce<Rational | null>((a, b) => (a && b ? Q.add(a, b) : null), Q.ZERO);
+    case 'quotient': {
+      const above = powerIn(e.numerator, name);
+      const below = powerIn(e.denominator, name);
+      return above && below ? Q.subtract(above, below) : null;
+    }
+    case 'call':
+      return e.function === 'log' ? Q.ZERO : null;
+    default:
+      return monomialOf(e)?.get(name) ?? null;
+  }
 }
 
 const symbolCandidate = (name: string): Candidate => ({ name, expression: build.symbol(name), kind: 'symbol' });
@@ -193,7 +253,7 @@ function ratioOf(e: Expression, ratios: readonly Candidate[]): Candidate | null 
 const withoutSide = (e: Expression): Expression => (e.kind === 'power' && e.exponent.kind === 'symbol' && /^[+-]$/.test(e.exponent.name) ? e.base : e);
 
 /** Words of running text: "for small x", "x is small", "as n \to \infty", "large n", "near x = 1". */
-function fromText(text: string, symbols: readonly string[]): Found | null {
+function fromText(text: string, symbols: readonly string[], ratios: readonly Candidate[]): Found | null {
   const plain = text.replace(/\$|\\[()]|\\(?:left|right)(?![A-Za-z])/g, ' ').replace(/\\varepsilon(?![A-Za-z])/g, '\\epsilon').replace(/\s+/g, ' ');
   let best: { at: number; found: Found } | null = null;
   for (const name of symbols) {
@@ -216,5 +276,17 @@ function fromText(text: string, symbols: readonly string[]): Found | null {
       if (match && (best === null || match.index < best.at)) best = { at: match.index, found: { variable: symbolCandidate(name), point, from: 'text' } };
     }
   }
-  return best?.found ?? null;
+  return best?.found ?? comparison(plain, symbols, ratios);
+}
+
+/** `a \ll x` between two symbols of the expression: the ratio where it is one of its units, else the smaller symbol. */
+function comparison(plain: string, symbols: readonly string[], ratios: readonly Candidate[]): Found | null {
+  const name = '(\\\\?[A-Za-z]+(?:_(?:\\{[^{}]*\\}|\\\\?[A-Za-z0-9]+))?)';
+  const match = new RegExp(`${name} ?(\\\\ll|≪|<<|\\\\gg|≫|>>)(?![A-Za-z]) ?${name}`).exec(plain);
+  if (!match) return null;
+  const [, left = '', sign = '', right = ''] = match;
+  const [small, large] = /ll|≪|<</.test(sign) ? [left, right] : [right, left];
+  if (!symbols.includes(small) || !symbols.includes(large)) return null;
+  const ratio = ratioOf(build.quotient(build.symbol(small), build.symbol(large)), ratios);
+  return { variable: ratio ?? symbolCandidate(small), point: ZERO, from: 'text' };
 }

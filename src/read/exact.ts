@@ -29,11 +29,27 @@ const SETS: Readonly<Record<string, Property>> = { Z: 'integer', N: 'natural', R
 /** `a > 0`, `n integer`, `x is real`, `0.9 <= c <= 1.1`, `a \ne 0`, `n \in \mathbb{Z}`, several joined by commas or `and`. */
 export function readAssumption(text: string, options: ReadOptions = {}): Outcome<readonly Assumption[]> {
   const out: Assumption[] = [];
+  /** Names waiting for what is said of them: `a, b > 0`. */
+  let waiting: string[] = [];
   for (const part of splitList(text)) {
+    if (/^\\?[A-Za-z]\w*(?:_\{[^{}]*\})?$/.test(part)) {
+      waiting.push(part);
+      continue;
+    }
     const one = readOneAssumption(part, options);
     if (!one.ok) return one;
     out.push(...one.value);
+    for (const name of waiting) {
+      const also = readExpression(name, notationOf(name), options);
+      if (!also.ok) return also;
+      const first = one.value[0];
+      if (first?.kind === 'relation') out.push({ ...first, left: also.value });
+      else out.push(...one.value.map((a): Assumption => (a.kind === 'property' ? { ...a, subject: also.value } : a)));
+    }
+    waiting = [];
   }
+  const [left] = waiting;
+  if (left !== undefined) return failure('bad-request', `“${short(left)}” is not understood as an assumption; write for example a > 0 or n integer.`);
   return out.length > 0 ? success(out) : failure('bad-request', 'The assumption is empty; write for example a > 0 or n integer.');
 }
 

@@ -13,8 +13,9 @@ import { candidates } from './candidates.ts';
 import { CodeReader, type CodeReading } from './code/index.ts';
 import { readDocument, type DocumentContent, type FormulaPlace, type Region } from './document/index.ts';
 import { languageOf } from './languages.ts';
-import type { MacroTable } from './math/macros.ts';
+import { type MacroTable, NO_MACROS } from './math/macros.ts';
 import { type Formula, readFormula, type ReadOptions } from './math/read.ts';
+import { orderMacros } from './style.ts';
 import { isBareName, isTruncated, orderTerms, principalSide } from './truncated.ts';
 
 /** What stands around a located expression. */
@@ -86,7 +87,7 @@ export function locate(text: string, language: string, selection: Span, options:
     formula: of?.expression ?? expression,
     side,
     orders: of ? orderTerms(of.expression) : [],
-    orderMacro: orderMacroIn(text.slice(place.start, place.end)),
+    orderMacro: orderMacroIn(text.slice(place.start, place.end), content.macros),
     conditions: of?.conditions ?? [],
     unknown: of?.unknown ?? null,
     region: region ?? null,
@@ -240,7 +241,9 @@ function withoutDelimiters(text: string, at: Span): Span {
 }
 
 /** The spelling of the first O in a formula: `O`, `\mathcal{O}`, `\mathcal O`, `\order`, or a macro of the document before a bracket. */
-export function orderMacroIn(formula: string): string | null {
+export function orderMacroIn(formula: string, macros: MacroTable = NO_MACROS): string | null {
+  const own = orderMacros(macros).find(([name]) => new RegExp(`${name.replace(/\\/g, '\\\\')}(?![A-Za-z])`).test(formula));
+  if (own) return own[0];
   const match = /(\\mathcal\s*\{O\}|\\mathcal\s+O|\\mathscr\s*\{O\}|\\mathrm\s*\{O\}|\{\\cal\s+O\}|\\[A-Za-z]*[oO](?:rder|rd|of)?(?![A-Za-z])|(?<![A-Za-z\\])[O])\s*(?:\\!|\\left|\\[bB]igg?l?)?\s*[({[]/.exec(formula);
   return match?.[1] ?? null;
 }

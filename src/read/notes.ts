@@ -166,6 +166,11 @@ const say = (words: Words, message: string, start: number, end: number): void =>
 function readClause(words: Words, clause: string, start: number, end: number): void {
   const s = words.settings;
   const match = /^(small|large|near|at|on|within|to within|relative|tolerance|assume|assuming|with|from|terms?|order|to order|up to order|through|skip|ignore|implements?|unknown|solve for|for|format|in|absolute|variable|side|as)\b\s*:?\s*/i.exec(clause);
+  const bareFormat = FORMATS[clause.toLowerCase()];
+  if (bareFormat !== undefined) {
+    s['format'] = bareFormat;
+    return;
+  }
   const leadingCount = /^(\d+)\s+terms?$/i.exec(clause);
   if (leadingCount) {
     s['terms'] = Number(leadingCount[1]);

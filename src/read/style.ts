@@ -85,7 +85,7 @@ export function documentStyle(text: string, options: { readonly language?: strin
 }
 
 /** Macros of the author's whose body is an O: name -> takes an argument. */
-function orderMacros(macros: MacroTable): readonly (readonly [string, boolean])[] {
+export function orderMacros(macros: MacroTable): readonly (readonly [string, boolean])[] {
   return [...macros.values()]
     .filter((m) => /^\s*(?:\\ensuremath\s*)?\{?\s*(?:\\mathcal\s*\{?\s*O\s*\}?|\\mathscr\s*\{?O\}?|\\mathrm\s*\{?O\}?|\\operatorname\s*\{O\}|O|\{\\cal O\})\s*\}?\s*(?:\\!|\\mathopen\{\}|\\left|\\[bB]igg?l?)*\s*(?:[([{]\s*#1|$)/.test(m.body))
     .map((m) => [`\\${m.name}`, m.parameters > 0] as const);

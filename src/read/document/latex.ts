@@ -40,7 +40,10 @@ export function latexRegions(text: string, from = 0, to = text.length): readonly
     const double = text.charCodeAt(at + 1) === 36;
     const begin = at + (double ? 2 : 1);
     if (misses > MOST_MISSES) return begin;
-    const end = double ? displayEnd(text, begin, to) : inlineEnd(text, begin, Math.min(to, begin + LONGEST_INLINE));
+    const reach = Math.min(to, begin + LONGEST_INLINE);
+    const balanced = double ? displayEnd(text, begin, to) : inlineEnd(text, begin, reach, true);
+    // Braces still open while the formula is being typed: the next dollar sign ends it.
+    const end = balanced < 0 && !double ? inlineEnd(text, begin, reach, false) : balanced;
     if (end < 0 || end === begin) {
       missed();
       return begin;
@@ -196,8 +199,8 @@ function lineEnd(text: string, from: number, to: number): number {
   return line < 0 || line > to ? to : line + 1;
 }
 
-/** The closing dollar of inline mathematics: outside braces, before a blank line; -1 where there is none. */
-function inlineEnd(text: string, from: number, to: number): number {
+/** The closing dollar of inline mathematics: outside braces where `balanced`, before a blank line; -1 where there is none. */
+function inlineEnd(text: string, from: number, to: number, balanced: boolean): number {
   let braces = 0;
   for (let i = from; i < to; i += 1) {
     const c = text.charCodeAt(i);
@@ -205,7 +208,7 @@ function inlineEnd(text: string, from: number, to: number): number {
     else if (c === 37) i = lineEnd(text, i, to) - 1;
     else if (c === 123) braces += 1;
     else if (c === 125) braces -= 1;
-    else if (c === 36 && braces <= 0) return i;
+    else if (c === 36 && (braces <= 0 || !balanced)) return i;
     else if (c === 10 && /^[ \t\r]*\n/.test(text.slice(i + 1, i + 40))) return -1;
   }
   return -1;

@@ -23,12 +23,11 @@ export function startsFactor(p: State): boolean {
     case 'word':
     case 'digit':
       return true;
-    case 'open': {
+    case 'open':
       return true;
-    }
     case 'mark':
       if (t.text === '|') return p.bars === 0 || opensHere(p);
-      if (t.text === '.') return peek(p, 1).kind === 'digit' && !(p.tokens[p.at - 1]?.kind === 'digit' && p.facts.dotProducts) && !(p.tokens[p.at - 1] !== undefined && p.tokens[p.at - 1]?.kind !== 'mark' && !t.spaced);
+      if (t.text === '.') return startsDecimal(p);
       return opensBracket(t) || t.text === 'l|' || t.text === 'left.' || t.text === '...' || t.text === 'begin{cases}' || t.text === 'begin{table}';
     case 'command':
       if (p.differentials.has(p.at)) return true;
@@ -39,6 +38,13 @@ export function startsFactor(p: State): boolean {
 }
 /** Commands that end or separate what is being read. */
 const NOT_FACTORS = new Set('cdot times ast div pm mp bullet star rvert rVert rangle rfloor rceil rparen rbrack rbrace implies iff Rightarrow Leftrightarrow Longrightarrow in notin forall exists therefore because land lor wedge vee mid colon semicolon not over choose atop end quad qquad hline cr slash vert middle to where qedhere dotproduct cross leftarrow subset subseteq cup cap setminus'.split(' '));
+
+/** `.5`: a point before a digit, not behind something it could be a full stop of. */
+function startsDecimal(p: State): boolean {
+  if (peek(p, 1).kind !== 'digit' || peek(p, 1).spaced) return false;
+  const before = p.tokens[p.at - 1];
+  return before === undefined || before.kind === 'mark' || before.kind === 'open' || (peek(p).spaced && !(before.kind === 'digit' && p.facts.dotProducts));
+}
 
 /** A bar inside bars opens a new pair only right behind an operator or bracket. */
 function opensHere(p: State): boolean {
@@ -102,7 +108,7 @@ function number(p: State): Expression {
     }
   };
   run();
-  if (isMark(peek(p), '.') && !peek(p).spaced && !(p.facts.dotProducts && digits !== '') && (peek(p, 1).kind === 'digit' ? !peek(p, 1).spaced : digits !== '' && decimalPointEnds(p))) {
+  if (isMark(peek(p), '.') && (digits === '' || !peek(p).spaced) && !(p.facts.dotProducts && digits !== '') && (peek(p, 1).kind === 'digit' ? !peek(p, 1).spaced : digits !== '' && decimalPointEnds(p))) {
     digits += next(p).text;
     run();
   }
@@ -165,7 +171,7 @@ function group(p: State): Expression {
       return fail(p, 'These braces are empty; write what belongs in them.', p.tokens[from]);
     }
     // `{\cal O}(x^3)`
-    if (close === from + 2 && /^[Oo]$/.test(p.tokens[from + 1]?.text ?? '') && p.tokens[from + 1]?.kind !== 'mark' && isMark(p.tokens[close + 1] as Token, '(')) {
+    if (close === from + 2 && /^[Oo]$/.test(p.tokens[from + 1]?.text ?? '') && p.tokens[from + 1]?.kind !== 'mark' && isMark(p.tokens[close + 1], '(')) {
       p.at = close + 1;
       return order(p, from, p.tokens[from + 1]?.text === 'o');
     }

@@ -67,7 +67,7 @@ function findDifferential(p: State, from: number, limit: number): { readonly at:
       if (skip > k) {
         if (inFraction === null && signs === 0 && t.kind === 'open') {
           for (let inner = k + 1; inner < skip; inner += 1) {
-            if (isDifferential(p, inner) && isCommand(p.tokens[k - 1] as Token, 'frac', 'dfrac', 'tfrac')) {
+            if (isDifferential(p, inner) && isCommand(p.tokens[k - 1], 'frac', 'dfrac', 'tfrac')) {
               inFraction = inner;
               break;
             }
@@ -183,7 +183,7 @@ export function derivative(p: State): Expression | null {
   let times = 1;
   let body = open + 2;
   const exponent = (k: number, end: number): { count: number; next: number } | null => {
-    if (!isMark(p.tokens[k] as Token, '^')) return null;
+    if (!isMark(p.tokens[k], '^')) return null;
     const first = p.tokens[k + 1];
     const last = first?.kind === 'open' ? (p.match[k + 1] ?? -1) : k + 1;
     const digits = p.tokens.slice(first?.kind === 'open' ? k + 2 : k + 1, first?.kind === 'open' ? last : last + 1);
@@ -234,7 +234,7 @@ export function derivative(p: State): Expression | null {
 function nameOnly(p: State): Expression {
   const from = p.at;
   let end = from + 1;
-  if (isMark(p.tokens[end] as Token, '_')) {
+  if (isMark(p.tokens[end], '_')) {
     const close = p.tokens[end + 1]?.kind === 'open' ? (p.match[end + 1] ?? end + 1) : end + 1;
     end = close + 1;
   }

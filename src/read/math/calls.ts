@@ -172,7 +172,7 @@ function bareArgument(p: State, written: string): Expression {
         const denominators: Expression[] = [];
         const at = p.at;
         do denominators.push(p.grammar.factor(p));
-        while (isName(peek(p)) && !startsFunction(p) && !isMark(p.tokens[p.at - 1] as Token, ')'));
+        while (isName(peek(p)) && !startsFunction(p) && !isMark(p.tokens[p.at - 1], ')'));
         value = node(p, from, { kind: 'quotient', numerator: value, denominator: denominators.length === 1 ? (denominators[0] as Expression) : node(p, at, { kind: 'product', factors: denominators }) });
       } else if (!(slash.spaced || behind.spaced) && !repeats(p, value)) {
         fail(p, `It is not plain whether the slash belongs to the argument of ${written}; put brackets around the argument.`, slash);

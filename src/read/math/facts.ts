@@ -18,6 +18,8 @@ export interface NameFacts {
   readonly imaginary: 'i' | 'j' | null;
   /** Products are written with full stops (`1.3.5`). */
   readonly dotProducts: boolean;
+  /** `\over` or `\choose` stands somewhere. */
+  readonly infix: boolean;
   /** Letters that count: indices of sums, letters under a factorial. */
   readonly indices: ReadonlySet<string>;
 }
@@ -126,7 +128,8 @@ export function gatherFacts(tokens: readonly Token[], match: Int32Array): NameFa
   const words = tokens.some((t) => t.kind === 'command' && /^(?:ln|log|lim|exp)$/.test(t.text));
   const eulerNumber = variableExponent || eulerByUse || (!bareE && sawEPower && !(plainSquareOnly && !words));
   const truncated = tokens.some((t, i) => (t.kind === 'command' && /^(?:[cl]?dots.?|approx|sim|simeq|mathcal|order)$/.test(t.text)) || t.text === '...' || (/^[Oo]$/.test(t.text) && tokens[i + 1]?.text === '('));
-  return { surelyFunctions, differentiated, truncated, bare, alone, eulerNumber, imaginary: jInExponent ? 'j' : iBound ? null : 'i', dotProducts, indices };
+  const infix = tokens.some((t) => t.kind === 'command' && (t.text === 'over' || t.text === 'choose'));
+  return { infix, surelyFunctions, differentiated, truncated, bare, alone, eulerNumber, imaginary: jInExponent ? 'j' : iBound ? null : 'i', dotProducts, indices };
 }
 
 function exponentText(tokens: readonly Token[], match: Int32Array, at: number): string {

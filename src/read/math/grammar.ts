@@ -240,7 +240,8 @@ function denominatorAfterSlash(p: State, before: readonly Expression[]): Express
       if (plainNumber(first) && divisors.length === 1 && (t.kind === 'super' || t.kind === 'sub')) break;
       fail(p, `It is not plain whether ${named(t)} belongs to the divisor; put brackets around what is divided by.`);
     }
-    if (isOrderName(p) || isFunctionWord(t)) break;
+    if (isOrderName(p)) break;
+    if (isFunctionWord(t)) fail(p, `It is not plain whether ${named(t)} belongs to the divisor; put brackets around what is divided by.`);
     divisors.push(p.grammar.factor(p));
   }
   return divisors.length === 1 ? first : node(p, from, { kind: 'product', factors: divisors });
@@ -253,12 +254,14 @@ export function factor(p: State): Expression {
   return deeper(p, () => {
     const from = p.at;
     let value = p.grammar.atom(p);
+    // Every rule must consume something, or the loops above it would not end.
+    if (p.at === from) fail(p, `${capital(named(peek(p)))} is not understood here; remove it or add an operator.`);
     for (let count = 0; ; count += 1) {
       if (count > MAX_DEPTH) fail(p, TOO_DEEP);
       const t = peek(p);
       if (isMark(t, '^', '**')) {
         const second = count > 0 && value.kind === 'power' && p.options.notation === 'latex' && t.text === '^' && p.tokens[p.at - 1]?.kind !== 'mark';
-        if (second && !isMark(p.tokens[p.at - 1] as Token, ')')) fail(p, 'Two exponents stand side by side; put braces around the inner power.');
+        if (second && !isMark(p.tokens[p.at - 1], ')')) fail(p, 'Two exponents stand side by side; put braces around the inner power.');
         next(p);
         const exponent = exponentOf(p);
         value = node(p, from, { kind: 'power', base: value, exponent });
@@ -270,7 +273,7 @@ export function factor(p: State): Expression {
         const twice = isMark(peek(p), '!');
         if (twice) next(p);
         value = node(p, from, { kind: 'call', function: twice ? 'doubleFactorial' : 'factorial', args: [value], written: twice ? '!!' : '!' });
-      } else if (isMark(t, '_') && isMark(p.tokens[p.at - 1] as Token, ')')) {
+      } else if (isMark(t, '_') && isMark(p.tokens[p.at - 1], ')')) {
         next(p);
         const index = p.grammar.texArgument(p);
         value = node(p, from, { kind: 'call', function: 'pochhammer', args: [value, index], written: '()_' });

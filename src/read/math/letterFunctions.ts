@@ -153,7 +153,7 @@ export function letterFunction(p: State, from: number, base: string, index: stri
   if (decided === false) return null;
   const description = find(base, index, primes, upright, shown.count);
   if (!description) return null;
-  if (decided === 'ask') fail(p, `It is not plain whether ${base}(...) is a product or the ${description.title}; write \\operatorname{${base}}(...) for the function or ${base} \\cdot (...) for the product.`, p.tokens[from]);
+  if (decided === 'ask') fail(p, `It is not plain whether ${base}(...) is a function or a product; write \\operatorname{${base}}(...) or ${base} \\cdot (...).`, p.tokens[from]);
   let exponent: Expression | null = null;
   if (exponentAt > 0) {
     next(p);

@@ -256,7 +256,12 @@ export function lex(text: string, options: LexOptions): Token[] {
       }
       if (name === 'stackrel' || name === 'overset' || name === 'underset') {
         const over = argument(end);
-        return over ? after(over, end) : end;
+        if (!over) return end;
+        const behind = after(over, end);
+        const base = argument(behind);
+        if (!base) return behind;
+        lexSource(base);
+        return after(base, behind);
       }
       if (TRANSPARENT.has(name)) return end;
       push('command', name, at, end);

@@ -1,7 +1,8 @@
 /** A name in a formula: symbol, constant, unspecified function, or special function written with a letter. */
 import { build, type Expression } from '../../expression/index.ts';
 import { isName, nameText } from './facts.ts';
-import { wordName } from './functionNames.ts';
+import { resolve, wordName } from './functionNames.ts';
+import { exponentOf, smallText } from './grammar.ts';
 import { applyKnown, bracketArguments } from './calls.ts';
 import { letterFunction } from './letterFunctions.ts';
 import { fail, isMark, next, node, peek, type State } from './state.ts';
@@ -94,7 +95,7 @@ export function name(p: State): Expression {
 /** `^{(4)}` behind a function's name; the number of differentiations, or null. */
 function derivativeExponent(p: State): number | null {
   const open = p.at + 1;
-  if (p.tokens[open]?.kind !== 'open' || !isMark(p.tokens[open + 1] as Token, '(')) return null;
+  if (p.tokens[open]?.kind !== 'open' || !isMark(p.tokens[open + 1], '(')) return null;
   const close = p.match[open + 1] ?? -1;
   if (close < 0 || p.match[open] !== close + 1) return null;
   const inner = p.tokens.slice(open + 2, close);
@@ -180,7 +181,7 @@ function functionRun(p: State, from: number): Expression | null {
   if (word.length < 2) return null;
   for (let digits = k; p.tokens[digits]?.kind === 'digit' && digits < k + 2; digits += 1) {
     const longer = word + p.tokens.slice(k, digits + 1).map((t) => t.text).join('');
-    if (wordName(longer) && isMark(p.tokens[digits + 1] as Token, '(')) {
+    if (wordName(longer) && isMark(p.tokens[digits + 1], '(')) {
       word = longer;
       k = digits + 1;
       break;
@@ -211,6 +212,8 @@ function plainWord(p: State, from: number, t: Token): Expression | string {
   if (t.upright && !known && isMark(peek(p), '(') && !p.options.functions.has(word)) {
     throw new Unreadable(`The function ${word} is not known; write it with known functions.`, { start: t.start, end: t.end }, 'unknown-function');
   }
+  const product = lettersApart(p, from, t);
+  if (product) return product;
   const [head = '', ...rest] = word.split('_');
   const greek = /^([A-Za-z]+?)(\d*)$/.exec(head);
   const base = GREEK.has(head) ? `\\${head === 'varepsilon' ? 'epsilon' : head}` : greek && GREEK.has(greek[1] ?? '') && greek[2] ? `\\${greek[1]}_${braced(greek[2])}` : head === 'hbar' ? '\\hbar' : head;
@@ -221,10 +224,36 @@ function plainWord(p: State, from: number, t: Token): Expression | string {
   return base;
 }
 
+/** `nx` in a text in which n and x stand alone is their product; `sinx` there is sin x. */
+function lettersApart(p: State, from: number, t: Token): Expression | null {
+  if (t.upright || !/^[A-Za-z]{2,6}$/.test(t.text) || GREEK.has(t.text) || t.text === 'hbar' || isMark(peek(p), '_', "'")) return null;
+  const glued = /^(a?(?:rc)?(?:sin|cos|tan)h?|exp|log|ln)([A-Za-z])$/.exec(t.text);
+  const inner = glued?.[2];
+  const known = glued ? wordName(glued[1] ?? '') : null;
+  if (known && inner !== undefined && p.facts.alone.has(inner)) {
+    const argument: Expression = { kind: 'symbol', name: inner, span: { start: t.end - 1, end: t.end } };
+    return { kind: 'call', function: known.plain === 'ln' ? 'log' : (resolve(known, { index: null, primes: 0, inverse: false, arguments: 1 })?.description.id ?? known.written), args: [argument], written: known.written, span: { start: t.start, end: t.end } };
+  }
+  const letters = [...t.text];
+  if (isMark(peek(p), '(') || !letters.every((letter) => p.facts.alone.has(letter))) return null;
+  const factors = letters.map((letter, i): Expression => ({ kind: 'symbol', name: letter, span: { start: t.start + i, end: t.start + i + 1 } }));
+  const last = factors[factors.length - 1] as Expression;
+  // A power behind the run belongs to its last letter.
+  if (isMark(peek(p), '^', '**')) {
+    next(p);
+    const exponent = exponentOf(p);
+    factors[factors.length - 1] = { kind: 'power', base: last, exponent, span: { start: last.span?.start ?? t.start, end: p.tokens[p.at - 1]?.end ?? t.end } };
+  } else if (peek(p).kind === 'super') {
+    const exponent = smallText(next(p));
+    factors[factors.length - 1] = { kind: 'power', base: last, exponent, span: { start: last.span?.start ?? t.start, end: p.tokens[p.at - 1]?.end ?? t.end } };
+  }
+  return node(p, from, { kind: 'product', factors });
+}
+
 /** Upright names and familiar functions take a bare argument; other plain words only one in brackets, so that `gamma x` stays a product. */
 function canTakeArgument(p: State, word: string, t: Token): boolean {
   let k = p.at;
-  while (isMark(p.tokens[k] as Token, '^', '_', "'")) {
+  while (isMark(p.tokens[k], '^', '_', "'")) {
     if (p.tokens[k]?.text === "'") k += 1;
     else {
       const close = p.match[k + 1] ?? -1;
@@ -232,7 +261,7 @@ function canTakeArgument(p: State, word: string, t: Token): boolean {
       while (p.tokens[k]?.kind === 'digit' && p.tokens[k - 1]?.kind === 'digit') k += 1;
     }
   }
-  if (isMark(p.tokens[k] as Token, '(', '[', '\\{')) return true;
+  if (isMark(p.tokens[k], '(', '[', '\\{')) return true;
   if (!t.upright && !FAMILIAR.test(word)) return false;
   return k > p.at || p.grammar.startsFactor(p) || peek(p).kind === 'super' || peek(p).kind === 'space' || isMark(peek(p), '-');
 }

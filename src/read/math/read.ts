@@ -2,7 +2,7 @@
 import type { Expression } from '../../expression/index.ts';
 import { failure, type Outcome, success } from '../../outcome.ts';
 import { atom, infix, startsFactor, texArgument } from './atoms.ts';
-import { gatherFacts } from './facts.ts';
+import { gatherFacts, type NameFacts } from './facts.ts';
 import { factor, factorRun, relation, sum, term } from './grammar.ts';
 import { lex } from './lexer.ts';
 import { type MacroTable, NO_MACROS } from './macros.ts';
@@ -22,6 +22,8 @@ export interface ReadOptions {
   readonly end?: number;
   /** Row ends (`\\\\`) are read past: the rows are one formula. */
   readonly joinRows?: boolean;
+  /** The formula around the stretch: what e, i and f(...) mean is decided there. */
+  readonly around?: { readonly start: number; readonly end: number };
 }
 
 /** What one stretch of mathematics says. */
@@ -66,19 +68,33 @@ function pair(tokens: readonly Token[]): Int32Array {
   return match;
 }
 
+function factsAround(text: string, notation: 'latex' | 'plain', options: ReadOptions): NameFacts | null {
+  const { around } = options;
+  if (!around || around.end - around.start > MAX_LENGTH) return null;
+  try {
+    const tokens = lex(text, { notation, macros: options.macros ?? NO_MACROS, from: around.start, to: around.end, joinRows: true });
+    return gatherFacts(tokens, pair(tokens));
+  } catch (error) {
+    // What stands around is half-typed: the stretch speaks for itself.
+    if (error instanceof Unreadable) return null;
+    throw error;
+  }
+}
+
 function stateOf(text: string, notation: 'latex' | 'plain', options: ReadOptions): State {
   const from = options.start ?? 0;
   const to = options.end ?? text.length;
   if (to - from > MAX_LENGTH) throw new Unreadable('This text is too long to be one formula; select a smaller piece.', { start: from, end: to });
   const tokens = lex(text, { notation, macros: options.macros ?? NO_MACROS, from, to, joinRows: options.joinRows ?? false });
   const match = pair(tokens);
+  const facts = factsAround(text, notation, options) ?? gatherFacts(tokens, match);
   const symbols = new Set(options.symbols ?? []);
   return {
     text,
     tokens,
     match,
     options: { notation, symbols, functions: new Set(options.functions ?? []), exact: options.exact ?? false },
-    facts: gatherFacts(tokens, match),
+    facts,
     grammar,
     at: 0,
     end: tokens.length - 1,
@@ -92,6 +108,9 @@ function stateOf(text: string, notation: 'latex' | 'plain', options: ReadOptions
 const isSeparator = (t: Token): boolean =>
   t.kind === 'space' || t.kind === 'text' || isMark(t, ',', ';', '.', ':', '\\\\', '=>', '!', '?', '"', '\\}') || isCommand(t, 'implies', 'iff', 'Rightarrow', 'Leftrightarrow', 'Longrightarrow', 'therefore', 'because', 'quad', 'qquad', 'hline', 'newline', 'cr', 'forall', 'colon', 'semicolon', 'qedhere', 'square', 'Leftarrow', 'where');
 
+/** `.5` at the start is a number, not punctuation. */
+const startsNumber = (p: State): boolean => isMark(peek(p), '.') && peek(p, 1).kind === 'digit' && !peek(p, 1).spaced;
+
 export function readFormula(text: string, notation: 'latex' | 'plain', options: ReadOptions = {}): Outcome<Formula> {
   try {
     const p = stateOf(text, notation, options);
@@ -100,7 +119,7 @@ export function readFormula(text: string, notation: 'latex' | 'plain', options: 
     const conditions: Expression[] = [];
     const remarks: string[] = [];
     for (;;) {
-      while (isSeparator(peek(p))) {
+      while (isSeparator(peek(p)) && !startsNumber(p)) {
         const t = next(p);
         if (t.kind === 'text') remarks.push(t.text.trim());
         if (isMark(t, ':') && main?.kind === 'symbol' && unknown === undefined && conditions.length === 0) {
@@ -139,7 +158,7 @@ export function readFormula(text: string, notation: 'latex' | 'plain', options: 
 /** One formula up to a separator. */
 function piece(p: State): Expression {
   const start = p.at;
-  const value = infix(p, start - 1, p.end) ?? relation(p);
+  const value = (p.facts.infix ? infix(p, start - 1, p.end) : null) ?? relation(p);
   if (p.at === start) fail(p, `${named(peek(p))} is not understood here.`);
   const t = peek(p);
   if (t.kind !== 'end' && !isSeparator(t) && !isMark(t, '(', '[')) {

@@ -61,8 +61,8 @@ export function within<T>(p: State, end: number, rule: () => T): T {
   p.end = before;
   return value;
 }
-export const isMark = (t: Token, ...marks: readonly string[]): boolean => t.kind === 'mark' && marks.includes(t.text);
-export const isCommand = (t: Token, ...names: readonly string[]): boolean => t.kind === 'command' && names.includes(t.text);
+export const isMark = (t: Token | undefined, ...marks: readonly string[]): boolean => t?.kind === 'mark' && marks.includes(t.text);
+export const isCommand = (t: Token | undefined, ...names: readonly string[]): boolean => t?.kind === 'command' && names.includes(t.text);
 
 export function next(p: State): Token {
   const token = peek(p);

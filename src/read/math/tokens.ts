@@ -45,5 +45,5 @@ export class Unreadable extends Error {
 /** Deepest nesting of brackets and operators that is read. Keeps every later recursion over the tree far from the end of the stack. */
 export const MAX_DEPTH = 200;
 /** Most tokens of one formula, macro expansion included. */
-export const MAX_TOKENS = 200_000;
+export const MAX_TOKENS = 20_000;
 export const TOO_DEEP = `This is nested more than ${MAX_DEPTH} levels deep; simplify the formula or close brackets that are still open.`;

@@ -116,6 +116,10 @@ export class Parser {
         left = this.#ternary(left);
         continue;
       }
+      if (level <= LEVEL.choice && token.kind === 'name' && token.text === 'if' && this.language.family === 'python') {
+        left = this.#trailingChoice(left);
+        continue;
+      }
       if (token.kind !== 'operator' && !(token.kind === 'name' && (token.text === 'and' || token.text === 'or'))) break;
       if (token.text === ':' && this.#colonEnds > 0) break;
       const own = binaryLevel(token.text, this.language);
@@ -124,7 +128,12 @@ export class Parser {
       this.next();
       this.skipNewlines();
       const right = this.binary(own + 1);
-      left = { kind: 'binary', operator: token.text, operatorStart: token.start, left, right, start: left.start, end: Math.max(right.end, token.end) };
+      const end = Math.max(right.end, token.end);
+      const chained = own === LEVEL.comparison && this.language.family === 'python' ? lastOperand(left) : null;
+      // In Python a < b < c is (a < b) and (b < c).
+      left = chained
+        ? { kind: 'binary', operator: 'and', operatorStart: token.start, left, right: { kind: 'binary', operator: token.text, operatorStart: token.start, left: chained, right, start: chained.start, end }, start: left.start, end }
+        : { kind: 'binary', operator: token.text, operatorStart: token.start, left, right, start: left.start, end };
     }
     this.#depth -= 1;
     return left;
@@ -152,8 +161,25 @@ export class Parser {
     return { kind: 'conditional', condition, then, otherwise, start: condition.start, end: otherwise.end };
   }
 
+  /** Python: `value if condition else value`. */
+  #trailingChoice(then: Code): Code {
+    this.next();
+    const condition = this.binary(LEVEL.or);
+    if (!this.isWord('else')) return this.#opaque(then.start, 'unfinished choice', [then, condition]);
+    this.next();
+    const otherwise = this.binary(LEVEL.choice);
+    return { kind: 'conditional', condition, then, otherwise, start: then.start, end: otherwise.end };
+  }
+
   prefix(level: number): Code {
     const token = this.peek();
+    if (token.kind === 'name' && token.text === 'not' && this.language.family === 'python' && this.#depth < MAX_NESTING) {
+      this.#depth += 1;
+      this.next();
+      const operand = this.binary(LEVEL.not);
+      this.#depth -= 1;
+      return { kind: 'unary', operator: 'not', operand, start: token.start, end: operand.end };
+    }
     if (token.kind === 'operator' && /^(?:[-+−!~&*]|\.not\.|\.-|\+\+|--)$/i.test(token.text) && this.#depth < MAX_NESTING) {
       this.#depth += 1;
       this.next();
@@ -537,4 +563,11 @@ export class Parser {
     }
     return { kind: 'opaque', what: 'expression nested too deeply', parts: [], start: open.start, end: this.lastEnd };
   }
+}
+
+/** The right side of a comparison, or of the last one of a chain; null for anything else. */
+function lastOperand(code: Code): Code | null {
+  if (code.kind !== 'binary') return null;
+  if (code.operator === 'and' && code.right.kind === 'binary' && code.right.operatorStart === code.operatorStart) return code.right.right;
+  return /^(?:[<>]=?|==|!=)$/.test(code.operator) ? code.right : null;
 }

@@ -3,14 +3,14 @@ import { build, type Expression, Q, type Rational, substitute } from '../express
 import { type Expansion, partialSum } from '../expand/index.ts';
 import { describe } from '../functions/index.ts';
 import { Declined } from '../outcome.ts';
-import { type Model, type ModelArithmetic, modelArithmetic, modelOfTree, rationalOf } from '../rigorous/index.ts';
+import { type LogModel, logModelOfTree, type Model, type ModelArithmetic, modelArithmetic, rationalOf } from '../rigorous/index.ts';
 import type { Numbers } from './numbers.ts';
 import { isExactlyZero, type Segment } from './region.ts';
 
 /** A model in s on a sub-interval of its unit domain. */
 export interface Local<T> {
   readonly m: ModelArithmetic<T>;
-  readonly f: Model<T>;
+  readonly f: LogModel<T>;
   /** s in [from, to]. */
   readonly from: T;
   readonly to: T;
@@ -27,10 +27,16 @@ function parameterModels<T>(n: Numbers<T>, m: ModelArithmetic<T>): Map<string, M
   return new Map([...n.parameters].map(([name, value]) => [name, m.constant(value)] as const));
 }
 
+/** The model of a tree without logarithms of s. */
 export function modelOf<T>(e: Expression, n: Numbers<T>, m: ModelArithmetic<T>, variable: string, leaf: Model<T>, vanishes?: (e: Expression) => boolean, check?: () => void): Model<T> | null {
+  const value = logModelOf(e, n, m, variable, leaf, vanishes, check);
+  return value !== null && value.length === 1 ? (value[0] ?? null) : null;
+}
+
+export function logModelOf<T>(e: Expression, n: Numbers<T>, m: ModelArithmetic<T>, variable: string, leaf: Model<T>, vanishes?: (e: Expression) => boolean, check?: () => void): LogModel<T> | null {
   const environment = new Map([...parameterModels(n, m), [variable, leaf] as const]);
   if (environment.size > PARAMETER_LIMIT) return null;
-  return modelOfTree(e, { m, trees: n.trees, real: n.r, describe, environment, vanishes, check });
+  return logModelOfTree(e, { m, trees: n.trees, real: n.r, describe, environment, vanishes, check });
 }
 
 /** The least q that makes every power of the expansion a whole multiple of 1/q; null where a power is not a rational number. */
@@ -49,7 +55,7 @@ export function denominatorOf(expansion: Expansion): number | null {
 export function localModel<T>(segment: Segment, to: Expression | null, n: Numbers<T>, variable: string, length: number, q: number, check: () => void): Local<T> | null {
   const { r } = n;
   const infinite = segment.local === 'upper' ? segment.upper === null || segment.expansion.point === 'inf' : segment.lower === null || segment.expansion.point === '-inf';
-  const m = modelArithmetic(r, n.unitRight, length, true);
+  const m = modelArithmetic(r, n.unitRight, length, true, r);
   const sideSign = segment.local === 'lower' ? 1 : -1;
   const zeros = Array.from({ length: q - 1 }, () => r.zero);
   if (infinite) {
@@ -59,7 +65,7 @@ export function localModel<T>(segment: Segment, to: Expression | null, n: Number
     if (start === null || r.containsZero(start)) return null;
     // x = start / s^q; the end nearer to infinity is s = (start/near)^(1/q).
     const leaf = m.polynomial([start], -q);
-    const f = modelOf(segment.expansion.function, n, m, variable, leaf, undefined, check);
+    const f = logModelOf(segment.expansion.function, n, m, variable, leaf, undefined, check);
     const scale = r.divide(r.one, start);
     if (f === null || scale === null) return null;
     const nearValue = near === null ? null : n.value(near);
@@ -78,7 +84,7 @@ export function localModel<T>(segment: Segment, to: Expression | null, n: Number
     if (r.isZero(centre) && r.isPoint(centre)) return false;
     return isExactlyZero(substitutePoint(e, variable, centreTree), []);
   };
-  const f = modelOf(segment.expansion.function, n, m, variable, leaf, vanishes, check);
+  const f = logModelOf(segment.expansion.function, n, m, variable, leaf, vanishes, check);
   if (f === null) return null;
   const sign = segment.expansion.side === 'left' ? (sideSign > 0 ? -1 : 1) : sideSign;
   return { m, f, from: r.zero, to: r.one, scale, denominator: q, sign };
@@ -86,38 +92,85 @@ export function localModel<T>(segment: Segment, to: Expression | null, n: Number
 
 const substitutePoint = (e: Expression, variable: string, point: Expression): Expression => substitute(e, variable, point);
 
-/** The model of f - sum where the local end is the point of expansion: the terms of the sum are coefficients of f, so what is left is the rest of them. */
-export function remainderAtPoint<T>(local: Local<T>, expansion: Expansion, n: Numbers<T>): Model<T> | null {
-  const { m, f, scale, denominator, sign } = local;
+/**
+ * The model of f - sum where the local end is the point of expansion: the terms of the sum are coefficients of f, so what is left is the rest of them.
+ * Below the remainder's power the coefficients are dropped (after a check that they agree); at that power, where logarithms may stand on both sides, they are subtracted.
+ */
+export function remainderAtPoint<T>(local: Local<T>, expansion: Expansion, n: Numbers<T>): LogModel<T> | null {
+  const { m, f } = local;
   const { r } = n;
-  if (expansion.remainder === null) return m.constant(r.zero);
+  if (expansion.remainder === null) return [m.constant(r.zero)];
   const order = expansion.remainder.power === null ? null : rationalOf(expansion.remainder.power);
-  if (order === null || expansion.prefactor !== null || expansion.remainder.scale !== null || expansion.terms.some((t) => t.log !== 0 || t.scale !== null)) return null;
-  const first = ceilingOf(Q.multiply(order, { num: BigInt(denominator), den: 1n }));
-  const expected = new Map<number, T>();
+  if (order === null || expansion.prefactor !== null || expansion.remainder.scale !== null || expansion.terms.some((t) => t.scale !== null)) return null;
+  const first = ceilingOf(Q.multiply(order, { num: BigInt(local.denominator), den: 1n }));
+  const expected = expectedCoefficients(local, expansion, n);
+  if (expected === null) return null;
+  const components = Math.max(f.length, ...[...expected.values()].map((list) => list.length));
+  const rest: Model<T>[] = [];
+  for (let j = 0; j < components; j += 1) {
+    const component = f[j] ?? m.constant(r.zero);
+    const nothing = component.coefficients.length === 0 && r.isZero(component.tail);
+    const end = nothing ? Infinity : r.isZero(component.tail) ? Infinity : component.valuation + component.coefficients.length;
+    if (end < first) return null;
+    for (let k = Math.min(component.valuation, ...expected.keys()); k < first; k += 1) {
+      const have = component.coefficients[k - component.valuation] ?? r.zero;
+      const want = expected.get(k)?.[j] ?? r.zero;
+      if (!r.containsZero(r.subtract(have, want))) throw new Declined('undecided', 'The expansion and the coefficients of the function disagree, so no bound was derived; please report this expression.');
+    }
+    const valuation = nothing ? first : Math.max(first, component.valuation);
+    const kept = component.coefficients.slice(Math.max(0, first - component.valuation));
+    const atFirst = expected.get(first)?.[j];
+    if (atFirst !== undefined && valuation === first) {
+      if (kept.length === 0 && !nothing) return null;
+      kept[0] = r.subtract(kept[0] ?? r.zero, atFirst);
+    } else if (atFirst !== undefined) kept.unshift(r.negate(atFirst), ...Array.from({ length: valuation - first - 1 }, () => r.zero));
+    const from = atFirst !== undefined ? first : valuation;
+    const polynomial = m.polynomial(kept, from);
+    rest.push(r.isZero(component.tail) ? polynomial : withTail(m, kept, component.tail, from));
+  }
+  while (rest.length > 1) {
+    const last = rest[rest.length - 1];
+    if (last === undefined || last.coefficients.length > 0 || !r.isZero(last.tail)) break;
+    rest.pop();
+  }
+  return rest;
+}
+
+/** Coefficients of s^k (log s)^j in the sum: index k, then j. t^p L^l with t = h s^q and L = log|t| (or log|x| at infinity) = a + b log s. */
+function expectedCoefficients<T>(local: Local<T>, expansion: Expansion, n: Numbers<T>): Map<number, T[]> | null {
+  const { scale, denominator, sign } = local;
+  const { r } = n;
+  const atInfinity = expansion.point === 'inf' || expansion.point === '-inf';
+  const expected = new Map<number, T[]>();
+  const logScale = expansion.terms.some((t) => t.log !== 0) ? r.log(scale) : r.zero;
+  if (logScale === null) return null;
+  const a = atInfinity ? r.negate(logScale) : logScale;
+  const b = r.fromInteger(atInfinity ? -denominator : denominator);
   for (const term of expansion.terms) {
     const power = rationalOf(term.power);
-    if (power === null) return null;
+    if (power === null || (sign < 0 && power.den !== 1n)) return null;
     const index = Number(Q.multiply(power, { num: BigInt(denominator), den: 1n }).num);
     const value = n.value(term.coefficient);
     const size = r.powerRational(scale, power);
-    if (value === null || size === null) return null;
-    const signed = sign < 0 && power.num % 2n !== 0n ? r.negate(value) : value;
-    if (sign < 0 && power.den !== 1n) return null;
-    expected.set(index, r.multiply(signed, size));
+    if (value === null || size === null || term.log < 0) return null;
+    const whole = r.multiply(sign < 0 && power.num % 2n !== 0n ? r.negate(value) : value, size);
+    const list = expected.get(index) ?? [];
+    let binomial = 1;
+    for (let j = 0; j <= term.log; j += 1) {
+      const factors = [r.powerInteger(a, term.log - j), r.powerInteger(b, j)];
+      const [x, y] = factors;
+      if (!x || !y) return null;
+      list[j] = r.add(list[j] ?? r.zero, r.multiply(r.multiply(whole, r.fromInteger(binomial)), r.multiply(x, y)));
+      binomial = (binomial * (term.log - j)) / (j + 1);
+    }
+    for (let j = 0; j < list.length; j += 1) list[j] ??= r.zero;
+    expected.set(index, list);
   }
-  for (let k = 0; k < f.coefficients.length && f.valuation + k < first; k += 1) {
-    const have = f.coefficients[k] ?? r.zero;
-    const want = expected.get(f.valuation + k) ?? r.zero;
-    if (!r.containsZero(r.subtract(have, want))) throw new Declined('undecided', 'The expansion and the coefficients of the function disagree, so no bound was derived; please report this expression.');
-  }
-  const kept = f.coefficients.slice(Math.max(0, first - f.valuation));
-  const valuation = Math.max(first, f.valuation);
-  if (f.valuation + f.coefficients.length < first) return null;
-  const rest = m.polynomial(kept, valuation);
-  if (r.isZero(f.tail)) return rest;
-  const end = f.valuation + f.coefficients.length;
-  return { valuation, coefficients: kept, tail: f.tail, range: kept.length === 0 ? f.tail : rangeWithTail(m, kept, f.tail, end - valuation) };
+  return expected;
+}
+
+function withTail<T>(m: ModelArithmetic<T>, kept: readonly T[], tail: T, from: number): Model<T> {
+  return { valuation: from, coefficients: kept, tail, range: rangeWithTail(m, kept, tail, kept.length) };
 }
 
 function rangeWithTail<T>(m: ModelArithmetic<T>, c: readonly T[], tail: T, steps: number): T {
@@ -131,7 +184,7 @@ const ceilingOf = (q: Rational): number => -Number(Q.floor(Q.negate(q)));
 /** f - sum about the middle of [x0, x1], s in [-1, 1]. */
 export function middleModel<T>(expansion: Expansion, sum: Expression, x0: T, x1: T, n: Numbers<T>, variable: string, length: number, check: () => void): { readonly f: Model<T>; readonly remainder: Model<T>; readonly m: ModelArithmetic<T> } | null {
   const { r } = n;
-  const m = modelArithmetic(r, n.unitBoth, length, false);
+  const m = modelArithmetic(r, n.unitBoth, length, false, r);
   const whole = r.union(x0, x1);
   const centre = r.midpoint(whole);
   const half = r.upperEnd(r.absolute(r.subtract(whole, centre)));

@@ -20,8 +20,8 @@ export interface Enclosed<T> {
   readonly upper: T | null;
   readonly lower: T;
   readonly pieces: number;
-  /** Middle of the smallest piece on which no bound exists. */
-  readonly trouble?: T;
+  /** A smallest piece on which no bound was found. */
+  readonly trouble?: PieceTask<T>;
 }
 
 interface Piece<T> extends PieceTask<T> {
@@ -70,7 +70,7 @@ export function refinePieces<T>(tasks: readonly PieceTask<T>[], floor: T, n: Num
   const endBound = (task: PieceTask<T>): T | null => {
     if (task.touches === 'none') return null;
     for (const q of [1, 2, 3]) {
-      const m = modelArithmetic(r, n.unitRight, options.length, true);
+      const m = modelArithmetic(r, n.unitRight, options.length, true, r);
       const end = task.touches === 'lower' ? task.x0 : task.x1;
       const width = r.upperEnd(r.absolute(r.subtract(task.x1, task.x0)));
       const zeros = Array.from({ length: q - 1 }, () => r.zero);
@@ -96,6 +96,7 @@ export function refinePieces<T>(tasks: readonly PieceTask<T>[], floor: T, n: Num
     offer(remainderAt(r.lowerEnd(task.x0), task, n, options));
     offer(remainderAt(r.upperEnd(task.x1), task, n, options));
   }
+  let undefinedPieces = 0;
   const open: Piece<T>[] = tasks.map((task) => ({ ...task, upper: bound(task) }));
   const larger = (a: T | null, b: T | null): boolean => (a === null ? b !== null : b !== null && r.isPositive(r.subtract(a, b)));
   let pieces = open.length;
@@ -107,8 +108,10 @@ export function refinePieces<T>(tasks: readonly PieceTask<T>[], floor: T, n: Num
     const target = r.multiply(lower, r.fromRational({ num: BigInt(Math.round((1 + options.slack) * 2 ** 30)), den: 1n << 30n }));
     if (piece.upper !== null && !r.isPositive(r.subtract(piece.upper, target))) return { upper: r.upperEnd(r.maximum(piece.upper, lower)), lower, pieces };
     const middle = r.midpoint(r.union(piece.x0, piece.x1));
-    const exhausted = pieces >= options.most || !r.isPositive(r.subtract(middle, r.lowerEnd(piece.x0))) || !r.isPositive(r.subtract(r.upperEnd(piece.x1), middle));
-    if (exhausted) return piece.upper === null ? { upper: null, lower, pieces, trouble: middle } : { upper: piece.upper, lower, pieces };
+    // Where f cannot be enclosed, thirty halvings have come within 1e-9 of what is in the way.
+    if (piece.upper === null) undefinedPieces += 1;
+    const exhausted = pieces >= options.most || undefinedPieces > 44 || !r.isPositive(r.subtract(middle, r.lowerEnd(piece.x0))) || !r.isPositive(r.subtract(r.upperEnd(piece.x1), middle));
+    if (exhausted) return piece.upper === null ? { upper: null, lower, pieces, trouble: piece } : { upper: piece.upper, lower, pieces };
     const left: PieceTask<T> = { ...piece, x1: middle, touches: piece.touches === 'upper' ? 'none' : piece.touches };
     const right: PieceTask<T> = { ...piece, x0: middle, touches: piece.touches === 'lower' ? 'none' : piece.touches };
     open[worst] = { ...left, upper: bound(left) };

@@ -2,13 +2,14 @@
 import { build, type Expression, freeSymbols, Q, type Rational } from '../expression/index.ts';
 import type { Expansion } from '../expand/index.ts';
 import { Declined } from '../outcome.ts';
-import { type Ball, real } from '../rigorous/index.ts';
+import { type Ball, type LogModel, logRange, type Model, real } from '../rigorous/index.ts';
 import { denominatorOf, localModel, remainderAtPoint, sumOf, type Local, modelOf } from './local.ts';
 import { ballNumbers, doubles, type Numbers, type ParameterBalls } from './numbers.ts';
 import { type PieceTask, refinePieces, remainderAt } from './pieces.ts';
+import { provenPlace } from './singular.ts';
 import { parameterBalls, type Segment, segmentsOf } from './region.ts';
 import { supremumOfModel } from './supremum.ts';
-import type { BoundProblem, RemainderBound } from './types.ts';
+import type { BoundProblem, Measure, RemainderBound } from './types.ts';
 
 /** Upper over lower bound that counts as settled. */
 const SETTLED = 1.001;
@@ -56,6 +57,7 @@ export function bound(problem: BoundProblem, cache: ModelCache = new Map(), leng
   improve(run(doubles(parameters), segments, problem, variable, check, memory));
   let precision = 128;
   for (let round = 0; round < 4 && !settled(best); round += 1) {
+    if (round > 0 && best !== null && (best as Result).upper === null) break;
     const before: Result | null = best;
     try {
       improve(run(ballNumbers(precision, parameters), segments, problem, variable, check, memory));
@@ -146,8 +148,15 @@ function run<T>(n: Numbers<T>, segments: readonly Segment[], problem: BoundProbl
     methods.add('Taylor models on pieces');
     if (result.upper !== null) upper = r.upperEnd(r.maximum(upper, result.upper));
     else {
-      const trouble = result.trouble === undefined ? null : n.toBall(result.trouble);
-      return { upper: null, lower: n.toBall(lower) ?? real.ZERO, steps, ...(trouble ? { place: build.number(real.lower(trouble)) } : {}), method: [...methods].join(' and ') };
+      const trouble = result.trouble;
+      const width = trouble ? r.toDouble(r.absolute(r.subtract(trouble.x1, trouble.x0))) : 0;
+      const whole = trouble && tasks.find((task) => !r.isNegative(r.subtract(trouble.x0, task.x0)) && !r.isPositive(r.subtract(trouble.x1, task.x1)));
+      const place = trouble && whole ? provenPlace(r.midpoint(r.union(trouble.x0, trouble.x1)), whole, 4 * width, n, variable, measure) : null;
+      if (place !== null) {
+        const what = measure === 'absolute' ? 'f - sum is unbounded there (negative leading power of its local series)' : 'f has a zero there and f - sum has none';
+        return { upper: null, lower: real.ZERO, steps: [`At the place named: ${what}.`], place, unbounded: true, method: 'local series at the singular place' };
+      }
+      return { upper: null, lower: n.toBall(lower) ?? real.ZERO, steps, method: [...methods].join(' and ') };
     }
   }
   const [u, l] = [n.toBall(upper), n.toBall(lower)];
@@ -205,12 +214,26 @@ function atPoint<T>(segment: Segment, n: Numbers<T>, problem: BoundProblem, vari
         check();
         const local = remembered(part.near, `${segment.local}${segment.expansion.side}${cut}`, n, variable, length, q, check, memory);
         if (local === null) break;
-        const remainder = remainderAtPoint(local, segment.expansion, n);
-        if (remainder === null) {
+        const rest = remainderAtPoint(local, segment.expansion, n);
+        if (rest === null) {
           length += EXTRA;
           continue;
         }
-        const g = problem.measure === 'absolute' ? remainder : local.m.divide(remainder, local.f);
+        if (rest.length > 1 || (problem.measure === 'relative' && local.f.length > 1)) {
+          const coarse = withLogarithms(r, rest, local.f, problem.measure);
+          if (coarse === null) break;
+          // Enough where it is below what is known from elsewhere; else the part is made smaller.
+          if (cut < 20 && r.isPositive(r.subtract(coarse, settledLower))) break;
+          return {
+            kind: 'bounded',
+            upper: coarse,
+            lower: settledLower,
+            rest: part.rest === null ? null : wholeTask(part.rest, sumOf(segment.expansion), n),
+            steps: (show) => [`Next to the point, t <= ${show(local.scale)}: f - sum is a sum of s^k (log s)^j with enclosed coefficients; with |s^k log^j s| <= (j/(k e))^j it is at most ${show(coarse)}.`],
+          };
+        }
+        const [remainder, f] = [rest[0], local.f[0]];
+        const g = remainder === undefined || f === undefined ? null : problem.measure === 'absolute' ? remainder : local.m.divide(remainder, f);
         if (g === null) break;
         if (g.valuation < 0) {
           const lead = g.coefficients[0];
@@ -241,6 +264,22 @@ function atPoint<T>(segment: Segment, n: Numbers<T>, problem: BoundProblem, vari
     }
   }
   return null;
+}
+
+/** An upper bound of |f - sum| (or of its ratio to f) over s in (0, 1] from the components of powers of log s. */
+function withLogarithms<T>(r: Numbers<T>['r'], rest: LogModel<T>, f: LogModel<T>, measure: Measure): T | null {
+  if (measure === 'absolute') {
+    const range = logRange(r, rest);
+    return range === null ? null : r.upperEnd(r.absolute(range));
+  }
+  // Divide both by the leading power of f, whose leading component must be free of logarithms and dominate the others.
+  const [lead] = f;
+  if (lead === undefined || lead.coefficients.length === 0) return null;
+  const shift = (g: Model<T>): Model<T> => ({ ...g, valuation: g.valuation - lead.valuation });
+  const numerator = logRange(r, rest.map(shift));
+  const denominator = logRange(r, f.map(shift));
+  const quotient = numerator === null || denominator === null ? null : r.divide(numerator, denominator);
+  return quotient === null ? null : r.upperEnd(r.absolute(quotient));
 }
 
 function tailMatters<T>(r: Numbers<T>['r'], result: { readonly upper: T; readonly tail: T }): boolean {
@@ -308,8 +347,10 @@ function atInfinity<T>(segment: Segment, sum: Expression, n: Numbers<T>, problem
       const start = leafStart && n.value(leafStart);
       const s = start && modelOf(sum, n, local.m, variable, local.m.polynomial([start], -q), undefined, check);
       if (!s) continue;
-      const difference = local.m.subtract(local.f, s);
-      const g = problem.measure === 'absolute' ? difference : local.m.divide(difference, local.f);
+      const [f, ...logs] = local.f;
+      if (f === undefined || logs.length > 0) continue;
+      const difference = local.m.subtract(f, s);
+      const g = problem.measure === 'absolute' ? difference : local.m.divide(difference, f);
       if (g === null) continue;
       if (g.valuation < 0) {
         const lead = g.coefficients[0];

@@ -15,4 +15,4 @@ export {
 } from './enclose.ts';
 /** Local models: truncated series with a proven remainder factor. */
 export { type Model, type ModelArithmetic, modelArithmetic } from './model.ts';
-export { type ModellableFunction, modelOfTree, type ModelTreeContext } from './model-tree.ts';
+export { type LogModel, logModelOfTree, logRange, type ModellableFunction, modelOfTree, type ModelTreeContext } from './model-tree.ts';

@@ -1,7 +1,7 @@
 /** Local models of expression trees. */
 import type { Expression, Rational } from '../expression/index.ts';
 import { build, dependsOn, freeSymbols, Q } from '../expression/index.ts';
-import type { RealArithmetic } from './arithmetic.ts';
+import type { ElementaryName, RealArithmetic } from './arithmetic.ts';
 import { type EnclosableFunction, evaluateTree, isElementaryName, rationalOf, type TreeArithmetic } from './enclose.ts';
 import type { Model, ModelArithmetic } from './model.ts';
 
@@ -25,18 +25,28 @@ export interface ModelTreeContext<T> {
   readonly check?: () => void;
 }
 
-/** The local model of a tree; null where it cannot be enclosed on the domain (a singularity inside, an unknown function). */
+/** sum over j of (log s)^j times model j, on (0, 1]. */
+export type LogModel<T> = readonly Model<T>[];
+
+/** The local model of a tree without logarithms of s; null where it cannot be enclosed on the domain (a singularity inside, an unknown function). */
 export function modelOfTree<T>(e: Expression, context: ModelTreeContext<T>): Model<T> | null {
+  const value = logModelOfTree(e, context);
+  return value !== null && value.length === 1 ? (value[0] ?? null) : null;
+}
+
+/** The local model of a tree, powers of log s included (only on the one-sided domain). */
+export function logModelOfTree<T>(e: Expression, context: ModelTreeContext<T>): LogModel<T> | null {
   const { m, trees, environment } = context;
+  const logs = logArithmetic(m, context.real);
   const { a } = m;
-  const known = new Map<Expression, Model<T> | null>();
+  const known = new Map<Expression, LogModel<T> | null>();
   const varying = [...environment.keys()];
   const isConstant = (node: Expression): boolean => {
     if (varying.length === 1) return !dependsOn(node, varying[0] ?? '');
     const free = freeSymbols(node);
     return !varying.some((name) => free.includes(name));
   };
-  const visit = (node: Expression): Model<T> | null => {
+  const visit = (node: Expression): LogModel<T> | null => {
     const seen = known.get(node);
     if (seen !== undefined) return seen;
     context.check?.();
@@ -45,63 +55,69 @@ export function modelOfTree<T>(e: Expression, context: ModelTreeContext<T>): Mod
     return value;
   };
   /** An undecided leading zero is settled by the proof of vanishing, where there is one. */
-  const settle = (node: Expression, value: Model<T> | null): Model<T> | null => {
-    if (value === null || !context.vanishes) return value;
-    const lead = value.coefficients[0];
-    if (lead === undefined || value.valuation !== 0 || a.isZero(lead) || !a.containsZero(lead) || !context.vanishes(node)) return value;
-    return withoutLead(value);
+  const settle = (node: Expression, value: LogModel<T> | null): LogModel<T> | null => {
+    const [only] = value ?? [];
+    if (value === null || value.length !== 1 || only === undefined || !context.vanishes) return value;
+    const lead = only.coefficients[0];
+    if (lead === undefined || only.valuation !== 0 || a.isZero(lead) || !a.containsZero(lead) || !context.vanishes(node)) return value;
+    return [withoutLead(only)];
   };
   const withoutLead = (value: Model<T>): Model<T> => {
     const rest = m.polynomial([a.zero, ...value.coefficients.slice(1)]);
     const length = value.coefficients.length;
     return a.isZero(value.tail) ? rest : m.add(rest, { valuation: length, coefficients: [], tail: value.tail, range: value.tail });
   };
-  const constantOf = (node: Expression): Model<T> | null => {
+  const constantOf = (node: Expression): LogModel<T> | null => {
     const value = evaluateTree(node, new Map(), trees, context.describe);
-    return value === null ? null : m.constant(value);
+    return value === null ? null : [m.constant(value)];
   };
-  const compute = (node: Expression): Model<T> | null => {
-    if (node.kind === 'symbol') return environment.get(node.name) ?? null;
+  const pure = (value: LogModel<T> | null): Model<T> | null => (value !== null && value.length === 1 ? (value[0] ?? null) : null);
+  const one = (value: Model<T> | null): LogModel<T> | null => (value === null ? null : [value]);
+  const compute = (node: Expression): LogModel<T> | null => {
+    if (node.kind === 'symbol') {
+      const leaf = environment.get(node.name);
+      return leaf ? [leaf] : null;
+    }
     if (isConstant(node)) return constantOf(node);
     switch (node.kind) {
       case 'negation': {
         const value = visit(node.operand);
-        return value && m.negate(value);
+        return value && value.map((f) => m.negate(f));
       }
-      case 'sum': {
-        let total: Model<T> | null = null;
-        for (const term of node.terms) {
-          const value = visit(term);
-          if (value === null) return null;
-          total = total === null ? value : m.add(total, value);
-        }
-        return total;
-      }
-      case 'product': {
-        let total: Model<T> | null = null;
-        for (const factor of node.factors) {
-          const value = visit(factor);
-          if (value === null) return null;
-          total = total === null ? value : m.multiply(total, value);
-        }
-        return total;
-      }
+      case 'sum':
+        return fold(node.terms, (x, y) => logs.add(x, y));
+      case 'product':
+        return fold(node.factors, (x, y) => logs.multiply(x, y));
       case 'quotient': {
         const [numerator, denominator] = [visit(node.numerator), visit(node.denominator)];
-        return numerator && denominator && m.divide(numerator, denominator);
+        if (numerator === null || denominator === null) return null;
+        const divisor = pure(denominator);
+        if (divisor !== null) return logs.each(numerator, (f) => m.divide(f, divisor));
+        const inverse = logs.power(denominator, { num: -1n, den: 1n });
+        return inverse && logs.multiply(numerator, inverse);
       }
       case 'power':
         return power(node.base, node.exponent);
       case 'root': {
         const degree = rationalOf(node.degree);
-        const radicand = visit(node.radicand);
-        return degree === null || radicand === null || !Q.isInteger(degree) || degree.num < 1n ? null : root(radicand, Number(degree.num));
+        const radicand = pure(visit(node.radicand));
+        return degree === null || radicand === null || !Q.isInteger(degree) || degree.num < 1n ? null : one(root(radicand, Number(degree.num)));
       }
       case 'call':
         return call(node.function, node.args, node);
       default:
         return null;
     }
+  };
+  const fold = (members: readonly Expression[], combine: (x: LogModel<T>, y: LogModel<T>) => LogModel<T> | null): LogModel<T> | null => {
+    let total: LogModel<T> | null = null;
+    for (const member of members) {
+      const value = visit(member);
+      if (value === null) return null;
+      total = total === null ? value : combine(total, value);
+      if (total === null) return null;
+    }
+    return total;
   };
   const root = (radicand: Model<T>, degree: number): Model<T> | null => {
     const q: Rational = { num: 1n, den: BigInt(degree) };
@@ -113,39 +129,53 @@ export function modelOfTree<T>(e: Expression, context: ModelTreeContext<T>): Mod
     }
     return m.powerRational(radicand, q);
   };
-  const power = (base: Expression, exponent: Expression): Model<T> | null => {
+  const power = (base: Expression, exponent: Expression): LogModel<T> | null => {
     if (base.kind === 'constant' && base.name === 'e') {
       const value = visit(exponent);
-      return value && m.elementary('exp', value);
+      return value && logs.elementary('exp', value);
     }
     const value = visit(base);
     if (value === null) return null;
     const q = rationalOf(exponent);
-    if (q !== null) return Math.abs(Number(q.num)) > 1e6 ? null : m.powerRational(value, q);
+    if (q !== null) return Math.abs(Number(q.num)) > 1e6 ? null : logs.power(value, q);
     if (isConstant(exponent)) {
       const y = evaluateTree(exponent, new Map(), trees, context.describe);
-      return y === null ? null : m.power(value, y);
+      const u = pure(value);
+      return y === null || u === null ? null : one(m.power(u, y));
     }
     // u^w = exp(w log u).
-    const [w, logarithm] = [visit(exponent), m.elementary('log', value)];
-    return w && logarithm && m.elementary('exp', m.multiply(w, logarithm));
+    const [w, logarithm] = [visit(exponent), logs.elementary('log', value)];
+    const product = w && logarithm && logs.multiply(w, logarithm);
+    return product && logs.elementary('exp', product);
   };
-  const call = (id: string, args: readonly Expression[], node: Expression): Model<T> | null => {
-    const models: Model<T>[] = [];
+  const call = (id: string, args: readonly Expression[], node: Expression): LogModel<T> | null => {
+    const values: LogModel<T>[] = [];
     for (const arg of args) {
       const value = visit(arg);
       if (value === null) return null;
-      models.push(value);
+      values.push(value);
+    }
+    const [only] = values;
+    if (only !== undefined && values.length === 1 && isElementaryName(id)) {
+      const value = logs.elementary(id, only);
+      // At a pole of tan the zero of cos can be settled by the proof of vanishing.
+      if (value === null && id === 'tan' && args[0]) return visit(build.quotient(build.call('sin', args[0]), build.call('cos', args[0])));
+      return value;
+    }
+    const models: Model<T>[] = [];
+    for (const value of values) {
+      const f = pure(value);
+      if (f === null) return null;
+      models.push(f);
     }
     const [first] = models;
     if (first === undefined) return null;
-    if (models.length === 1 && isElementaryName(id)) return m.elementary(id, first);
-    if (id === 'abs' || id === 'sign') return signed(id, first);
-    if (id === 'max' || id === 'min') return extreme(id, models);
+    if (id === 'abs' || id === 'sign') return one(signed(id, first));
+    if (id === 'max' || id === 'min') return one(extreme(id, models));
     const described = context.describe?.(id);
-    if (id === 'atan2' && models[1]) return angle(first, models[1]);
+    if (id === 'atan2' && models[1]) return one(angle(first, models[1]));
     if (described?.definition) return visit(described.definition(args));
-    return context.call?.(id, args, models) ?? byDerivative(id, args, models, node);
+    return one(context.call?.(id, args, models) ?? byDerivative(id, args, models, node));
   };
   const signOnDomain = (f: Model<T>): 1 | -1 | null => {
     const r = context.real;
@@ -213,6 +243,238 @@ export function modelOfTree<T>(e: Expression, context: ModelTreeContext<T>): Mod
     return evaluateTree(build.call(id, ...args.map((arg, k) => (k === index ? build.symbol(names[k] ?? '') : arg))), new Map(values.flatMap((v, k) => (k === index ? [[names[k] ?? '', v] as const] : []))), trees, context.describe);
   };
   return visit(e);
+}
+
+interface LogArithmetic<T> {
+  add(f: LogModel<T>, g: LogModel<T>): LogModel<T>;
+  multiply(f: LogModel<T>, g: LogModel<T>): LogModel<T> | null;
+  each(f: LogModel<T>, map: (g: Model<T>) => Model<T> | null): LogModel<T> | null;
+  power(f: LogModel<T>, q: Rational): LogModel<T> | null;
+  elementary(name: ElementaryName, f: LogModel<T>): LogModel<T> | null;
+}
+
+/** Beyond this power of log s a model is refused. */
+const MOST_LOGS = 24;
+
+/** Enclosure of s^v (log s)^j on (0, 1]: the extreme is (j/(v e))^j, with the sign of (-1)^j; null for v <= 0 < j. */
+export function logPowerRange<T>(r: RealArithmetic<T>, v: number, j: number): T | null {
+  if (j === 0) return v === 0 ? r.one : v > 0 ? r.union(r.zero, r.one) : null;
+  if (v <= 0) return null;
+  const base = r.divide(r.fromInteger(j), r.multiply(r.fromInteger(v), r.constant('e')));
+  const extreme = base === null ? null : r.powerInteger(base, j);
+  if (extreme === null) return null;
+  return r.union(r.zero, j % 2 === 0 ? extreme : r.negate(extreme));
+}
+
+/** Enclosure over (0, 1]; null where a component does not vanish fast enough to tame its logarithm. */
+export function logRange<T>(r: RealArithmetic<T>, f: LogModel<T>): T | null {
+  let total = r.zero;
+  for (const [j, g] of f.entries()) {
+    if (g.coefficients.length === 0 && r.isZero(g.tail)) continue;
+    const weight = logPowerRange(r, g.valuation, j);
+    if (weight === null) return null;
+    total = r.add(total, r.multiply(weight, g.range));
+  }
+  return total;
+}
+
+function logArithmetic<T>(m: ModelArithmetic<T>, r: RealArithmetic<T> | null): LogArithmetic<T> {
+  const { a } = m;
+  const zeroModel = m.constant(a.zero);
+  const isNothing = (f: Model<T>): boolean => f.coefficients.length === 0 && a.isZero(f.tail);
+  const trim = (f: Model<T>[]): LogModel<T> => {
+    while (f.length > 1 && isNothing(f[f.length - 1] ?? zeroModel)) f.pop();
+    return f;
+  };
+  const at = (f: LogModel<T>, j: number): Model<T> => f[j] ?? zeroModel;
+  const add = (f: LogModel<T>, g: LogModel<T>): LogModel<T> => trim(Array.from({ length: Math.max(f.length, g.length) }, (_, j) => m.add(at(f, j), at(g, j))));
+  const multiply = (f: LogModel<T>, g: LogModel<T>): LogModel<T> | null => {
+    if (f.length === 1 && g.length === 1) return [m.multiply(at(f, 0), at(g, 0))];
+    if (f.length + g.length > MOST_LOGS) return null;
+    const result: Model<T>[] = Array.from({ length: f.length + g.length - 1 }, () => zeroModel);
+    for (let i = 0; i < f.length; i += 1) for (let j = 0; j < g.length; j += 1) result[i + j] = m.add(result[i + j] ?? zeroModel, m.multiply(at(f, i), at(g, j)));
+    return trim(result);
+  };
+  const each = (f: LogModel<T>, map: (g: Model<T>) => Model<T> | null): LogModel<T> | null => {
+    const result: Model<T>[] = [];
+    for (const g of f) {
+      const value = isNothing(g) ? zeroModel : map(g);
+      if (value === null) return null;
+      result.push(value);
+    }
+    return trim(result);
+  };
+
+  /**
+   * phi(g + d) = sum_(k<K) phi_k(g) d^k + phi_K(xi) d^K, phi_k = phi^(k)/k!, for d with logarithms that tends to zero: K makes the last part smaller than every coefficient kept.
+   * `derivative(k, x)` gives phi_k at a model, `range(k, x)` over a set.
+   */
+  const compose = (g: Model<T>, d: LogModel<T>, derivative: (k: number) => Model<T> | null, range: (k: number, over: T) => T | null): LogModel<T> | null => {
+    if (r === null) return null;
+    const least = Math.min(...d.filter((f) => !isNothing(f)).map((f) => f.valuation));
+    const base = m.rangeOf(g);
+    const spread = logRange(r, d);
+    if (!(least > 0) || base === null || spread === null) return null;
+    const count = Math.min(12, Math.max(2, Math.ceil(m.length / least)));
+    let total: LogModel<T> = [zeroModel];
+    let power: LogModel<T> = [m.constant(a.one)];
+    for (let k = 0; k < count; k += 1) {
+      const factor = derivative(k);
+      const term = factor && multiply([factor], power);
+      const next = multiply(power, d);
+      if (term === null || next === null) return null;
+      total = add(total, term);
+      power = next;
+    }
+    const last = range(count, a.union(base, a.add(base, spread)));
+    if (last === null) return null;
+    return add(total, power.map((f) => (isNothing(f) ? f : { valuation: f.valuation, coefficients: [], tail: a.multiply(last, f.range), range: a.multiply(last, f.range) })));
+  };
+  const split = (f: LogModel<T>): readonly [Model<T>, LogModel<T>] => [at(f, 0), [zeroModel, ...f.slice(1)]];
+  const factorial = (k: number): number => {
+    let value = 1;
+    for (let i = 2; i <= k; i += 1) value *= i;
+    return value;
+  };
+  const over = (x: T | null, n: number): T | null => (x === null ? null : a.divideInteger(x, n));
+  const shift = (f: Model<T>, by: number): Model<T> => (isNothing(f) ? f : { ...f, valuation: f.valuation + by });
+
+  const power = (f: LogModel<T>, q: Rational): LogModel<T> | null => {
+    if (f.length === 1) {
+      const value = m.powerRational(at(f, 0), q);
+      return value === null ? null : [value];
+    }
+    if (q.den === 1n && q.num > 0n && q.num <= 8n) {
+      let result: LogModel<T> | null = f;
+      for (let k = 1n; k < q.num && result !== null; k += 1n) result = multiply(result, f);
+      return result;
+    }
+    const [g, d] = split(f);
+    const v = g.valuation;
+    const lead = Number(q.num) * v;
+    if (isNothing(g) || lead % Number(q.den) !== 0) return null;
+    const [g0, d0] = [shift(g, -v), d.map((x) => shift(x, -v))];
+    const exponent = a.fromRational(q);
+    let binomial = a.one;
+    const binomials: T[] = [binomial];
+    for (let k = 1; k <= MOST_LOGS; k += 1) {
+      binomial = a.divideInteger(a.multiply(binomial, a.subtract(exponent, a.fromInteger(k - 1))), k);
+      binomials.push(binomial);
+    }
+    const lowered = (k: number): Rational => ({ num: q.num - BigInt(k) * q.den, den: q.den });
+    const value = compose(
+      g0,
+      d0,
+      (k) => {
+        const raised = m.powerRational(g0, lowered(k));
+        return raised && m.scale(raised, binomials[k] ?? a.zero);
+      },
+      (k, x) => {
+        const raised = a.powerRational(x, lowered(k));
+        return raised === null ? null : a.multiply(raised, binomials[k] ?? a.zero);
+      },
+    );
+    return value && value.map((x) => shift(x, lead / Number(q.den)));
+  };
+
+  /** The integer c of a term c log s without further factor: e^(c log s) = s^c. */
+  const wholePower = (f: LogModel<T>): number => {
+    const term = at(f, 1);
+    const lead = term.coefficients[0];
+    if (r === null || isNothing(term) || term.valuation !== 0 || lead === undefined) return 0;
+    const floor = r.floor(r.midpoint(lead));
+    return floor !== null && a.isZero(a.subtract(lead, a.fromInteger(floor))) ? Number(floor) : 0;
+  };
+  const elementary = (name: ElementaryName, f: LogModel<T>): LogModel<T> | null => {
+    if (f.length === 1) {
+      const only = at(f, 0);
+      if (name === 'log' && only.valuation !== 0) {
+        // log(s^v g) = v log s + log g, s in (0, 1].
+        if (r === null || !r.isNonNegative(m.domain)) return null;
+        const rest = m.elementary('log', shift(only, -only.valuation));
+        return rest && [rest, m.constant(a.fromInteger(only.valuation))];
+      }
+      const value = m.elementary(name, only);
+      return value && [value];
+    }
+    const whole = name === 'exp' ? wholePower(f) : 0;
+    if (whole !== 0) {
+      const value = elementary('exp', add(f, [zeroModel, m.constant(a.fromInteger(-whole))]));
+      return value && value.map((x) => shift(x, whole));
+    }
+    const [g, d] = split(f);
+    switch (name) {
+      case 'exp':
+      case 'expm1': {
+        const e = m.elementary('exp', g);
+        const value = e && compose(g, d, (k) => m.scale(e, a.divideInteger(a.one, factorial(k))), (k, x) => over(a.exp(x), factorial(k)));
+        return value && name === 'expm1' ? add(value, [m.constant(a.fromInteger(-1))]) : value;
+      }
+      case 'log': {
+        const v = g.valuation;
+        if (isNothing(g)) return null;
+        const [g0, d0] = [shift(g, -v), d.map((x) => shift(x, -v))];
+        const inverse = m.powerInteger(g0, -1);
+        const value = compose(
+          g0,
+          d0,
+          (k) => {
+            if (k === 0) return m.elementary('log', g0);
+            const raised = inverse && m.powerInteger(inverse, k);
+            return raised && m.scale(raised, a.divideInteger(a.fromInteger(k % 2 === 1 ? 1 : -1), k));
+          },
+          (k, x) => {
+            const raised = a.powerInteger(x, -k);
+            return raised === null ? null : a.divideInteger(k % 2 === 1 ? raised : a.negate(raised), k);
+          },
+        );
+        return value && (v === 0 ? value : add(value, [zeroModel, m.constant(a.fromInteger(v))]));
+      }
+      case 'sqrt':
+        return power(f, { num: 1n, den: 2n });
+      case 'sin':
+      case 'cos': {
+        // Derivatives run through sin, cos, -sin, -cos.
+        const [s, c] = [m.elementary('sin', g), m.elementary('cos', g)];
+        if (s === null || c === null) return null;
+        const start = name === 'sin' ? 0 : 1;
+        const cycle = [s, c, m.negate(s), m.negate(c)];
+        const ranges = (x: T): readonly (T | null)[] => {
+          const [u, w] = [a.sin(x), a.cos(x)];
+          return [u, w, u === null ? null : a.negate(u), w === null ? null : a.negate(w)];
+        };
+        return compose(
+          g,
+          d,
+          (k) => m.scale(cycle[(start + k) % 4] ?? s, a.divideInteger(a.one, factorial(k))),
+          (k, x) => over(ranges(x)[(start + k) % 4] ?? null, factorial(k)),
+        );
+      }
+      case 'tan': {
+        const [s, c] = [elementary('sin', f), elementary('cos', f)];
+        const inverse = c && power(c, { num: -1n, den: 1n });
+        return s && inverse && multiply(s, inverse);
+      }
+      case 'sinh':
+      case 'cosh':
+      case 'tanh': {
+        const e = elementary('exp', f);
+        const back = elementary('exp', f.map((x) => m.negate(x)));
+        const half = a.divideInteger(a.one, 2);
+        if (e === null || back === null) return null;
+        const s = add(e, back.map((x) => m.negate(x))).map((x) => m.scale(x, half));
+        const c = add(e, back).map((x) => m.scale(x, half));
+        if (name !== 'tanh') return name === 'sinh' ? s : c;
+        const inverse = power(c, { num: -1n, den: 1n });
+        return inverse && multiply(s, inverse);
+      }
+      case 'log1p':
+        return elementary('log', add([m.constant(a.one)], f));
+      default:
+        return null;
+    }
+  };
+  return { add, multiply, each, power, elementary };
 }
 
 function mentions(e: Expression, id: string): boolean {

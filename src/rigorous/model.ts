@@ -8,7 +8,7 @@
  * for y = e^P and its truncation Y, Y - e^P = e^P(s) int_0^s (Y' - P'Y) e^-P, and the integrand is s^(m-1) times a known polynomial. Cost O(m^2) each.
  */
 import type { Rational } from '../expression/index.ts';
-import type { Arithmetic, ElementaryName } from './arithmetic.ts';
+import type { Arithmetic, ElementaryName, RealArithmetic } from './arithmetic.ts';
 
 export interface Model<T> {
   readonly valuation: number;
@@ -52,8 +52,8 @@ export interface ModelArithmetic<T> {
   withRange(f: Model<T>, range: T): Model<T>;
 }
 
-/** `oneSided`: the domain is [0, 1], so that (s^v)^q = s^(vq). */
-export function modelArithmetic<T>(a: Arithmetic<T>, domain: T, length: number, oneSided: boolean): ModelArithmetic<T> {
+/** `oneSided`: the domain is [0, 1], so that (s^v)^q = s^(vq). `real`: the same arithmetic where it is real; exponentials that vanish faster than every power are then enclosed as a mere tail. */
+export function modelArithmetic<T>(a: Arithmetic<T>, domain: T, length: number, oneSided: boolean, real: RealArithmetic<T> | null = null): ModelArithmetic<T> {
   type M = Model<T>;
   const { zero, one } = a;
   const isZero = (x: T): boolean => a.isZero(x);
@@ -200,7 +200,23 @@ export function modelArithmetic<T>(a: Arithmetic<T>, domain: T, length: number, 
   const overflow = (w: readonly T[], y: readonly T[], n: number): T[] => convolve(w, y, n, w.length + y.length - 1);
   const orderOf = (u: M): number => (exact(u) ? length : Math.min(length, u.coefficients.length));
 
+  /**
+   * e^f for f = -w s^-k with w > 0 (k > 0) plus a regular part: e^-y <= m!/y^m for y > 0, so the value is s^(km) times a number in [0, m!/w^m].
+   * Only on [0, 1] and only where the leading part tends to minus infinity.
+   */
+  const flat = (f: M): M | null => {
+    if (real === null || !oneSided || f.valuation >= 0 || !real.isNegative(f.range)) return null;
+    const k = -f.valuation;
+    const m = Math.ceil(length / k) + 1;
+    let factor: T | null = one;
+    for (let j = 1; j <= m && factor !== null; j += 1) factor = a.divide(times(factor, a.fromInteger(j)), a.negate(f.range));
+    if (factor === null) return null;
+    const tail = a.union(zero, real.upperEnd(factor));
+    return { valuation: k * m, coefficients: [], tail, range: tail };
+  };
+
   const exponential = (f: M, start?: T): M | null => {
+    if (f.valuation < 0) return start === undefined ? flat(f) : null;
     const u = regular(f);
     if (u === null) return null;
     const c = u.coefficients;

@@ -1,0 +1,147 @@
+/** Where no bound exists: finds the place, and proves by a local model there (or by a change of sign) that the remainder is unbounded. */
+import { build, type Expression, Q, type Rational, substitute } from '../expression/index.ts';
+import { type Model, modelArithmetic } from '../rigorous/index.ts';
+import { logModelOf, modelOf } from './local.ts';
+import type { Numbers } from './numbers.ts';
+import { type PieceTask, remainderAt } from './pieces.ts';
+import { isExactlyZero } from './region.ts';
+import type { Measure } from './types.ts';
+
+/** Exact numbers of the usual shapes within `width` of x: rationals, rational multiples of pi, square roots, logarithms and powers of e. */
+export function exactNear(x: number, width: number): readonly Expression[] {
+  const found: Expression[] = [];
+  const offer = (value: number, spread: number, largest: bigint, make: (q: Rational) => Expression): void => {
+    const q = simplest(value - spread, value + spread);
+    if (q !== null && q.den <= largest && q.num <= 10_000n && q.num >= -10_000n) found.push(make(q));
+  };
+  const pi = Math.PI;
+  offer(x, width, 1000n, (q) => build.number(q));
+  if (x !== 0) {
+    offer(x / pi, width / pi, 60n, (q) => build.product(build.number(q), build.constant('pi')));
+    offer(x * x, 2 * Math.abs(x) * width + width * width, 200n, (q) => (x > 0 ? build.squareRoot(build.number(q)) : build.negation(build.squareRoot(build.number(q)))));
+    if (Math.abs(x) < 50) offer(Math.exp(x), Math.exp(x) * width * 2, 200n, (q) => build.call('log', build.number(q)));
+    offer(Math.log(Math.abs(x)), (2 * width) / Math.abs(x), 60n, (q) => (x > 0 ? build.call('exp', build.number(q)) : build.negation(build.call('exp', build.number(q)))));
+  }
+  return found;
+}
+
+/** The fraction with the smallest denominator in [a, b] (Stern-Brocot descent by continued fractions). */
+function simplest(a: number, b: number): Rational | null {
+  if (!(b >= a) || !Number.isFinite(a) || !Number.isFinite(b)) return null;
+  if (a <= 0 && b >= 0) return Q.ZERO;
+  if (b < 0) {
+    const q = simplest(-b, -a);
+    return q && Q.negate(q);
+  }
+  let [low, high] = [a, b];
+  const digits: bigint[] = [];
+  for (let depth = 0; depth < 40; depth += 1) {
+    const whole = Math.floor(low);
+    if (whole + 1 <= high || whole === low) {
+      digits.push(BigInt(whole === low ? whole : whole + 1));
+      let value = Q.rational(digits[digits.length - 1] ?? 0n);
+      for (let k = digits.length - 2; k >= 0; k -= 1) value = Q.add(Q.rational(digits[k] ?? 0n), Q.reciprocal(value));
+      return value;
+    }
+    digits.push(BigInt(whole));
+    [low, high] = [1 / (high - whole), 1 / (low - whole)];
+  }
+  return null;
+}
+
+/** A proven place near x at which the remainder (or its ratio to f) is unbounded within the task's piece; null where none was proved. */
+export function provenPlace<T>(x: T, task: PieceTask<T>, width: number, n: Numbers<T>, variable: string, measure: Measure): Expression | null {
+  const { r } = n;
+  const middle = r.toDouble(x);
+  for (const place of exactNear(middle, Math.max(width, Math.abs(middle) * 1e-12))) {
+    const p = n.value(place);
+    if (p === null) continue;
+    // Inside the task, its ends included.
+    if (r.isNegative(r.subtract(p, task.x0)) || r.isPositive(r.subtract(p, task.x1))) continue;
+    for (const direction of [1, -1]) {
+      for (const h of [2 ** -6, 2 ** -12]) {
+        const m = modelArithmetic(r, n.unitRight, 10, true, r);
+        const step = r.fromRational(Q.fromDouble(direction * h));
+        const leaf = m.polynomial([p, step]);
+        const vanishes = (e: Expression): boolean => isExactlyZero(substitute(e, variable, place), []);
+        const f = logModelOf(task.expansion.function, n, m, variable, leaf, vanishes);
+        const s = f && modelOf(task.sum, n, m, variable, leaf, vanishes);
+        const [main, ...logs] = f ?? [];
+        if (!main || !s) continue;
+        const difference = m.subtract(main, s);
+        if (logs.length > 0) {
+          if (measure === 'absolute' && growsLikeLogarithm(r, [difference, ...logs])) return place;
+          continue;
+        }
+        const g = measure === 'absolute' ? difference : m.divide(difference, main);
+        const lead = g?.coefficients[0];
+        if (g && g.valuation < 0 && lead !== undefined && !r.containsZero(lead)) return place;
+      }
+    }
+  }
+  return measure === 'relative' ? (zeroBySign(task, middle, width, n, variable) ?? poleBySign(task, middle, width, n, variable)) : poleBySign(task, middle, width, n, variable);
+}
+
+/** The least power of s has a negative exponent, or exponent zero with a logarithm, and a coefficient that is not zero at its highest logarithm. */
+function growsLikeLogarithm<T>(r: Numbers<T>['r'], f: readonly Model<T>[]): boolean {
+  const present = f.map((g, j) => ({ g, j })).filter(({ g }) => g.coefficients.length > 0);
+  const least = Math.min(...present.map(({ g }) => g.valuation));
+  const top = present.filter(({ g }) => g.valuation === least).pop();
+  const lead = top?.g.coefficients[0];
+  return top !== undefined && lead !== undefined && !r.containsZero(lead) && (least < 0 || (least === 0 && top.j > 0));
+}
+
+/** f changes sign on a small piece while f - sum does not vanish there: the ratio is unbounded. The place is given to 15 digits. */
+function zeroBySign<T>(task: PieceTask<T>, middle: number, width: number, n: Numbers<T>, variable: string): Expression | null {
+  const { r } = n;
+  const spread = Math.max(width, Math.abs(middle) * 1e-9, 1e-12);
+  const [a, b] = [r.fromRational(Q.fromDouble(middle - spread)), r.fromRational(Q.fromDouble(middle + spread))];
+  if (r.isNegative(r.subtract(a, task.x0)) || r.isPositive(r.subtract(b, task.x1))) return null;
+  const at = (x: T): T | null => n.value(task.expansion.function, new Map([[variable, x]]));
+  const [fa, fb, all] = [at(a), at(b), at(r.union(a, b))];
+  if (fa === null || fb === null || all === null) return null;
+  const changes = (r.isPositive(fa) && r.isNegative(fb)) || (r.isNegative(fa) && r.isPositive(fb));
+  const rest = remainderAt(r.union(a, b), task, n, { variable, measure: 'absolute' });
+  return changes && rest !== null && !r.containsZero(rest) ? build.number(Q.fromDouble(Number(middle.toPrecision(15)))) : null;
+}
+
+/** A denominator changes sign on a small piece where what it divides has no zero and the rest is bounded: f has a pole there, which a bounded sum leaves. */
+function poleBySign<T>(task: PieceTask<T>, middle: number, width: number, n: Numbers<T>, variable: string): Expression | null {
+  const { r } = n;
+  const spread = Math.max(width, Math.abs(middle) * 1e-9, 1e-12);
+  const [a, b] = [r.fromRational(Q.fromDouble(middle - spread)), r.fromRational(Q.fromDouble(middle + spread))];
+  if (r.isNegative(r.subtract(a, task.x0)) || r.isPositive(r.subtract(b, task.x1))) return null;
+  const over = (e: Expression, x: T): T | null => n.value(e, new Map([[variable, x]]));
+  const whole = r.union(a, b);
+  const bounded = (e: Expression): boolean => over(e, whole) !== null;
+  const nonzero = (e: Expression): boolean => {
+    const value = over(e, whole);
+    return value !== null && !r.containsZero(value);
+  };
+  const changesSign = (e: Expression): boolean => {
+    const [fa, fb] = [over(e, a), over(e, b)];
+    return fa !== null && fb !== null && bounded(e) && ((r.isPositive(fa) && r.isNegative(fb)) || (r.isNegative(fa) && r.isPositive(fb)));
+  };
+  const others = (list: readonly Expression[], k: number): readonly Expression[] => list.filter((_, i) => i !== k);
+  const hasPole = (e: Expression): boolean => {
+    switch (e.kind) {
+      case 'negation':
+        return hasPole(e.operand);
+      case 'quotient':
+        return (changesSign(e.denominator) && nonzero(e.numerator)) || (nonzero(e.denominator) && hasPole(e.numerator));
+      case 'product':
+        return e.factors.some((factor, k) => hasPole(factor) && others(e.factors, k).every(nonzero));
+      case 'sum':
+        return e.terms.some((term, k) => hasPole(term) && others(e.terms, k).every(bounded));
+      case 'power':
+        return e.exponent.kind === 'number' ? e.exponent.value.num < 0n && changesSign(e.base) : e.exponent.kind === 'negation' && e.exponent.operand.kind === 'number' && e.exponent.operand.value.num > 0n && changesSign(e.base);
+      case 'call': {
+        const [arg] = e.args;
+        return arg !== undefined && e.function === 'tan' && changesSign(build.call('cos', arg)) && nonzero(build.call('sin', arg));
+      }
+      default:
+        return false;
+    }
+  };
+  return hasPole(task.expansion.function) && bounded(task.sum) ? build.number(Q.fromDouble(Number(middle.toPrecision(15)))) : null;
+}

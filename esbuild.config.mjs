@@ -41,7 +41,8 @@ const bundles = [
   { ...forNode, entryPoints: ['src/editor/main.node.ts'], outfile: 'dist/extension.js' },
   { ...forBrowser, entryPoints: ['src/editor/main.web.ts'], outfile: 'dist/extension.web.js' },
   { ...forNode, entryPoints: ['src/worker/node.ts'], outfile: 'dist/worker.js' },
-  { ...forBrowser, format: 'iife', plugins: [noNodeModules], entryPoints: ['src/worker/web.ts'], outfile: 'dist/worker.web.js' },
+  // A worker has no DOM: packages that tell the two apart must give their worker variant.
+  { ...forBrowser, format: 'iife', conditions: ['worker'], plugins: [noNodeModules], entryPoints: ['src/worker/web.ts'], outfile: 'dist/worker.web.js' },
   { ...forNode, entryPoints: ['src/cli/main.ts'], outfile: 'dist/cli.js', define: { LEADING_ORDER_VERSION: JSON.stringify(require('./package.json').version) }, banner: { js: '#!/usr/bin/env node' } },
   {
     ...shared,

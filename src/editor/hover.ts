@@ -1,6 +1,7 @@
 /** The hover: what is expanded and why, one line of Unicode, a small table, the typeset formula, and links. */
 import * as vscode from 'vscode';
 import type { ExpandAnswer } from '../protocol.ts';
+import { shortened } from '../webview/figures.ts';
 import type { Place } from '../worker/desk/types.ts';
 import { type Consultation, selectionOf } from './consultant.ts';
 import { rangeOf } from './edits.ts';
@@ -12,10 +13,14 @@ import { limitText, plainSymbol, sourcesText } from './words.ts';
 
 const DEADLINE_MS = 300;
 const PICTURE_DEADLINE_MS = 150;
+/** The first picture waits for the typesetter's fonts. */
+const FIRST_PICTURE_DEADLINE_MS = 500;
 const PICTURE_WIDTH = 480;
 const LONGEST_LINE = 600;
 
 const after = <T>(ms: number, value: T): Promise<T> => new Promise((resolve) => setTimeout(() => resolve(value), ms));
+
+let drawnBefore = false;
 
 export function registerHover(services: Services): vscode.Disposable {
   return vscode.languages.registerHoverProvider(SELECTOR, {
@@ -82,7 +87,8 @@ async function render(services: Services, document: vscode.TextDocument, consult
   foot.appendMarkdown(links(link, answer));
   const contents: vscode.MarkdownString[] = [head];
   if (picture) {
-    const made = await Promise.race([drawn(services, answer), after(PICTURE_DEADLINE_MS, null)]);
+    const made = await Promise.race([drawn(services, answer), after(drawnBefore ? PICTURE_DEADLINE_MS : FIRST_PICTURE_DEADLINE_MS, null)]);
+    drawnBefore ||= made !== null;
     if (made) contents.push(made);
   }
   if (document.version !== consultation.version) return null;
@@ -104,37 +110,41 @@ function figures(answer: ExpandAnswer, { asked }: Consultation): string {
   const tolerance = asked.tolerance ?? '';
   if (asked.interval && (answer.bound || answer.needed)) {
     const [from, to] = asked.interval.map(minus);
-    const columns: (readonly [string, string])[] = [[vscode.l10n.t('terms'), String(answer.terms.length)]];
-    if (answer.bound) columns.push([vscode.l10n.t('proven bound on [{0}, {1}]', from ?? '', to ?? ''), boundText(answer)]);
-    if (answer.needed) columns.push([vscode.l10n.t('terms needed for {0}', tolerance), neededText(answer)]);
+    const rows: (readonly [string, string])[] = [];
+    if (answer.bound) rows.push([vscode.l10n.t('proven bound on [{0}, {1}]', from ?? '', to ?? ''), boundText(answer)]);
+    if (answer.needed) rows.push([vscode.l10n.t('terms needed for {0}', tolerance), neededText(answer)]);
     return table(
-      columns.map(([name]) => escapeMarkdown(name)),
-      [columns.map(([, value]) => escapeMarkdown(value))],
+      [cell(vscode.l10n.t('terms')), String(answer.terms.length)],
+      rows.map((row) => row.map(cell)),
     );
   }
   const { reach } = answer;
   if (!reach || reach.length === 0) return '';
   return table(
-    [escapeMarkdown(vscode.l10n.t('terms')), ...reach.map((row) => String(row.terms))],
+    [cell(vscode.l10n.t('terms')), ...reach.map((row) => cell(String(row.terms)))],
     [
-      [escapeMarkdown(vscode.l10n.t('error proven ≤ {0} within', tolerance)), ...reach.map((row) => escapeMarkdown(row.distance === null ? '–' : row.distance === 'inf' ? '∞' : row.distance))],
-      [escapeMarkdown(vscode.l10n.t('left out')), ...reach.map((row) => escapeMarkdown(row.order))],
+      [cell(vscode.l10n.t('left out')), ...reach.map((row) => cell(row.order))],
+      [cell(vscode.l10n.t('error proven ≤ {0} within', tolerance)), ...reach.map((row) => cell(row.distance === null ? '–' : row.distance === 'inf' ? '∞' : shortened(row.distance, 'below')))],
     ],
   );
 }
 
+/** The hover gives its table no room between columns. */
+const cell = (text: string): string => `${escapeMarkdown(text)}\u2003`;
+
 function boundText({ bound }: ExpandAnswer): string {
   if (!bound) return '–';
   if (bound.value === null) return vscode.l10n.t('none: unbounded at {0}', bound.place ?? '?');
-  return bound.factor ? `${bound.value} · ${bound.factor}` : bound.value;
+  const value = shortened(bound.value, 'above');
+  return bound.factor ? `${value} · ${bound.factor}` : value;
 }
 const minus = (end: string): string => end.replaceAll('-', '−');
 
 function neededText(answer: ExpandAnswer): string {
   const { needed } = answer;
   if (!needed) return '–';
-  if (needed.terms !== null) return needed.bound ? `${needed.terms} (${vscode.l10n.t('bound {0}', needed.bound)})` : String(needed.terms);
-  const reach = needed.reach ? ` ${vscode.l10n.t('It can be kept up to a distance of {0}.', needed.reach.distance)}` : '';
+  if (needed.terms !== null) return needed.bound ? `${needed.terms} (${vscode.l10n.t('bound {0}', shortened(needed.bound, 'above'))})` : String(needed.terms);
+  const reach = needed.reach ? ` ${vscode.l10n.t('It can be kept up to a distance of {0}.', shortened(needed.reach.distance, 'below'))}` : '';
   return `${vscode.l10n.t('no number of terms does: {0}', needed.reason ?? '')}${reach}`;
 }
 

@@ -11,4 +11,4 @@ export function commandLink(label: string, command: string, args: readonly unkno
 
 export const tableRow = (cells: readonly string[]): string => `| ${cells.join(' | ')} |`;
 export const table = (head: readonly string[], rows: readonly (readonly string[])[]): string =>
-  [tableRow(head), tableRow(head.map(() => '---')), ...rows.map(tableRow)].join('\n');
+  [tableRow(head), tableRow(head.map(() => ':--')), ...rows.map(tableRow)].join('\n');

@@ -3,6 +3,7 @@ import type { ExpandAnswer } from '../protocol.ts';
 import type { Question } from '../worker/desk/types.ts';
 import { expandControls } from './controls.ts';
 import { type Child, h } from './dom.ts';
+import { shortened } from './figures.ts';
 import { ladder } from './ladder.ts';
 import { t } from './language.ts';
 import { math } from './math.ts';
@@ -48,7 +49,7 @@ function facts(answer: ExpandAnswer, asked: Question): HTMLElement {
   if (answer.oscillating) add(t('oscillating'));
   if (answer.bound) {
     if (answer.bound.value === null) add(t('unbounded', answer.bound.place ?? '?'), 'caution');
-    else add([h('span', { class: 'muted' }, `${asked.interval ? t('boundOn', ...asked.interval) : t('bound')} `), h('strong', { id: 'bound' }, answer.bound.value), answer.bound.factor ? [' · ', h('code', {}, answer.bound.factor)] : null]);
+    else add([h('span', { class: 'muted' }, `${asked.interval ? t('boundOn', ...asked.interval.map((end) => end.replaceAll('-', '−'))) : t('bound')} `), h('strong', { id: 'bound', title: answer.bound.value }, shortened(answer.bound.value, 'above')), answer.bound.factor ? [' · ', h('code', {}, answer.bound.factor)] : null]);
   }
   if (answer.needed) lines.push(...neededLines(answer, asked));
   if (answer.at) add(`${t('at')} ${t('atRow', answer.at.argument, answer.at.function, answer.at.sum, answer.at.error)}`);
@@ -62,12 +63,12 @@ function neededLines(answer: ExpandAnswer, asked: Question): Child[] {
   const tolerance = asked.tolerance ?? '';
   if (needed.terms !== null) {
     const text = needed.terms === 1 ? t('neededOne', tolerance) : t('neededFor', needed.terms, tolerance);
-    const beside = [needed.bound ? `${t('bound')} ${needed.bound}` : '', needed.minimal ? t('neededMinimal') : ''].filter(Boolean).join('; ');
+    const beside = [needed.bound ? `${t('bound')} ${shortened(needed.bound, 'above')}` : '', needed.minimal ? t('neededMinimal') : ''].filter(Boolean).join('; ');
     return [h('p', { class: 'good', id: 'needed' }, text, beside && h('span', { class: 'muted' }, ` (${beside})`))];
   }
   const more = [
-    needed.reach ? t('reachNone', needed.reach.distance) : '',
-    needed.best ? t('best', needed.best.terms, needed.best.bound) : '',
+    needed.reach ? t('reachNone', shortened(needed.reach.distance, 'below')) : '',
+    needed.best ? t('best', needed.best.terms, shortened(needed.best.bound, 'above')) : '',
     needed.fittedDegree !== undefined ? t('fitted', needed.fittedDegree) : '',
   ].filter(Boolean);
   return [h('p', { class: 'caution', id: 'needed' }, [t('neededNone', tolerance, needed.reason ?? ''), ...more].join(' '))];
@@ -90,7 +91,7 @@ function details(answer: ExpandAnswer): Child[] {
         h('summary', {}, t('proof')),
         h('p', {}, bound.method),
         proof.length > 0 && h('ol', {}, ...proof.map((step) => h('li', {}, step))),
-        bound.lower !== null && h('p', { class: 'muted' }, t('lower', bound.lower)),
+        bound.lower !== null && h('p', { class: 'muted' }, t('lower', shortened(bound.lower, 'below'))),
       ),
     answer.assumptions.length > 0 && h('section', {}, h('h2', {}, t('assumptions')), h('ul', { class: 'plain' }, ...answer.assumptions.map((assumption) => h('li', {}, h('code', {}, assumption))))),
     answer.general && h('section', {}, h('h2', {}, t('general')), math(answer.general)),

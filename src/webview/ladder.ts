@@ -2,6 +2,7 @@
 import type { ExpandAnswer } from '../protocol.ts';
 import type { Question } from '../worker/desk/types.ts';
 import { h, svg } from './dom.ts';
+import { shortened } from './figures.ts';
 import { t } from './language.ts';
 
 const BAR = 96;
@@ -30,7 +31,7 @@ export function ladder(answer: ExpandAnswer, asked: Question, choose: (question:
               tolerance > 0 && svg('line', { class: 'mark', x1: along(tolerance).toFixed(1), x2: along(tolerance).toFixed(1), y1: 0, y2: BAR_HEIGHT }),
             )
           : null;
-      return line(row.terms, answer, choose, [row.order, row.bound ?? '–'], bar);
+      return line(row.terms, answer, choose, [row.order, row.bound === null ? '–' : shortened(row.bound, 'above')], bar);
     }),
   );
 }
@@ -42,7 +43,7 @@ function reachTable(answer: ExpandAnswer, asked: Question, choose: (question: Qu
   return section(
     `${t('reach')} (${asked.tolerance ?? ''})`,
     h('thead', {}, h('tr', {}, h('th', { scope: 'col' }, t('terms')), h('th', { scope: 'col' }, t('order')), h('th', { scope: 'col' }, t('distance')))),
-    rows.map((row) => line(row.terms, answer, choose, [row.order, row.distance === 'inf' ? '∞' : (row.distance ?? '–')], null)),
+    rows.map((row) => line(row.terms, answer, choose, [row.order, row.distance === 'inf' ? '∞' : row.distance === null ? '–' : shortened(row.distance, 'below')], null)),
   );
 }
 

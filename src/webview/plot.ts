@@ -3,6 +3,7 @@ import type { ExpandAnswer, PlotAnswer } from '../protocol.ts';
 import type { Question } from '../worker/desk/types.ts';
 import { h, svg } from './dom.ts';
 import { t } from './language.ts';
+import { shortened } from './figures.ts';
 import { decades, errors, noiseFloor, ordinate, pathThrough, powerOfTen, type Range, short, ticks, validity } from './plotMath.ts';
 
 const HEIGHT = 148;
@@ -93,7 +94,8 @@ export function errorPlot(plot: PlotAnswer, answer: ExpandAnswer, asked: Questio
   const smallest = Math.max(Math.min(...seen, ...marks), largest * 1e-14, 1e-300);
   const y = { low: Math.log10(smallest) - 0.4, high: Math.log10(largest) + 0.4 };
   const area = frame(width, spanOf(plot.x), y);
-  const logs = error.map((e) => (e === null ? null : Math.max(Math.log10(Math.max(e, floor, 1e-300)), y.low)));
+  // What is left below the noise of doubles says nothing about the remainder.
+  const logs = error.map((e) => (e === null || e <= floor ? null : Math.max(Math.log10(e), y.low)));
   const kept = tolerance > 0 ? validity(plot.x, error, Math.max(tolerance, floor)) : null;
   const words = kept ? t('holdsFrom', short(kept.low), short(kept.high)) : tolerance > 0 ? t('holdsNowhere') : '';
   const clip = `clip-${(serial += 1)}`;
@@ -123,7 +125,7 @@ export function errorPlot(plot: PlotAnswer, answer: ExpandAnswer, asked: Questio
     'figure',
     {},
     image,
-    h('figcaption', {}, key('error', t('error')), tolerance > 0 && key('tolerance', t('toleranceBand', asked.tolerance ?? '')), bound !== null && key('bound', t('provenBound', answer.bound?.value ?? ''))),
+    h('figcaption', {}, key('error', t('error')), tolerance > 0 && key('tolerance', t('toleranceBand', asked.tolerance ?? '')), bound !== null && key('bound', t('provenBound', shortened(answer.bound?.value ?? '', 'above')))),
     words && h('p', { class: 'note' }, words),
   );
 }

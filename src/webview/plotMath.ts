@@ -55,12 +55,13 @@ export function noiseFloor(plot: PlotAnswer, relative: boolean): number {
   return 2.3e-16 * (relative ? 1 : Math.max(largest, 1e-300));
 }
 
-/** The longest run of samples whose error is within the tolerance. */
+/** The longest run of samples whose error is within the tolerance. One missing value inside a run (a removable singularity) does not end it. */
 export function validity(x: readonly number[], error: readonly (number | null)[], tolerance: number): Range | null {
+  const holds = (i: number): boolean => finite(error[i]) && (error[i] ?? Infinity) <= tolerance;
   let best: Range | null = null;
   let start: number | null = null;
   for (let i = 0; i <= x.length; i += 1) {
-    const within = i < x.length && finite(error[i]) && (error[i] ?? Infinity) <= tolerance;
+    const within = i < x.length && (holds(i) || (error[i] === null && holds(i - 1) && holds(i + 1)));
     if (within && start === null) start = i;
     if (!within && start !== null) {
       const run = { low: x[start] ?? 0, high: x[i - 1] ?? 0 };

@@ -5,6 +5,7 @@ import { toPlain } from '../write/index.ts';
 import { blame } from './blame.ts';
 import { type Claim, isTranscendental } from './claims.ts';
 import type { FoundFormula } from './formulas.ts';
+import { explicitPart, type General, generalIn, judgeGeneral } from './generalClaims.ts';
 import { type Hint, judge, type Judgement } from './judge.ts';
 import { notationOf } from './notation.ts';
 import type { Setting } from './context.ts';
@@ -31,6 +32,12 @@ export function findingOf(claim: Claim, f: Expression, asked: Asked, place: Plac
   const choices = settingsFor(f, claim.side, asked, place.around);
   const tried: Tried[] = [];
   for (const choice of choices) {
+    const general = generalIn(f, claim.side, choice.setting);
+    if (general) {
+      const finding = generalFinding(claim, f, general, choice, place, options);
+      if (finding !== 'next') return finding;
+      continue;
+    }
     const judgement = judge(f, claim.side, claim.relation, choice.setting);
     if (judgement.kind === 'identity') return null;
     if (judgement.kind === 'holds') return holding(claim, f, choice.setting, judgement, place, options.lenient);
@@ -44,6 +51,30 @@ export function findingOf(claim: Claim, f: Expression, asked: Asked, place: Plac
   if (options.lenient !== undefined) return undecided(claim, place, `Taken as ${options.lenient} the claim does not hold; its definition does not stand in this document.`);
   return failing(claim, f, best.choice.setting, best.judgement, place);
 }
+
+/** A claim with a general term: its explicit part first, then its first terms, then a proof. `next`: try the next setting. */
+function generalFinding(claim: Claim, f: Expression, general: General, choice: Choice, place: Place, options: { readonly lenient?: string }): Finding | null | 'next' {
+  const explicit = explicitPart(claim.side, general);
+  if (explicit) {
+    const judgement = judge(f, explicit, claim.relation, choice.setting);
+    if (judgement.kind === 'fails') {
+      if (!choice.certain && judgement.failure.matched === 0) return 'next';
+      return options.lenient === undefined ? failing({ ...claim, side: explicit }, f, choice.setting, judgement, place) : undecided(claim, place, UNDEFINED_NAME);
+    }
+  }
+  const judged = judgeGeneral(f, claim.side, claim.relation, general, choice.setting);
+  const base = { ...claim.span, claim: claim.span, found: '', fix: null, ...labelOf(place) };
+  switch (judged.kind) {
+    case 'holds':
+      return { ...base, verdict: 'holds', severity: 'none', reason: 'Holds: the general term is proved for every index.' };
+    case 'undecided':
+      return undecided(claim, place, judged.reason);
+    case 'fails':
+      if (options.lenient !== undefined || !isTranscendental(f, choice.setting.variable)) return undecided(claim, place, UNDEFINED_NAME);
+      return { ...base, ...(judged.place ?? claim.span), verdict: 'fails', severity: 'error', reason: judged.reason };
+  }
+}
+const UNDEFINED_NAME = 'The claim does not hold for the usual meaning of its left side, whose definition does not stand in this document.';
 
 const matchedIn = (t: Tried): number => (t.judgement.kind === 'fails' ? t.judgement.failure.matched : -1);
 

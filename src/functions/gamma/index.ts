@@ -4,6 +4,7 @@ import type { FunctionDescription } from '../description.ts';
 import { argument } from '../compose.ts';
 import { enclosed } from '../enclosure/wrap.ts';
 import { barnesGLocal, barnesGValue, logBarnesGDerivative, logBarnesGLocal } from './barnes.ts';
+import { barnesAlgorithms } from '../zeta/enclosure.ts';
 import { gammaAlgorithms } from './enclosure.ts';
 import { explicitOrder, gammaLocal, gammaValue, logGammaLocal, logGammaValue, polygammaLocal, polygammaValue } from './gamma.ts';
 import { incompleteDerivative, lowerGammaLocal, lowerGammaValue, upperGammaLocal, upperGammaValue } from './incomplete.ts';
@@ -65,4 +66,4 @@ const descriptions: readonly FunctionDescription[] = [
   { id: 'superfactorial', title: 'superfactorial', arity: 1, names: gammaNames.superfactorial, definition: ([n = number(0)]) => call('barnesG', sum(n, number(2))) },
 ];
 
-export const gammaFunctions = enclosed(descriptions, gammaAlgorithms);
+export const gammaFunctions = enclosed(descriptions, { ...gammaAlgorithms, ...barnesAlgorithms });

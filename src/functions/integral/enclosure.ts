@@ -249,12 +249,12 @@ export const integralAlgorithms: Readonly<Record<string, Algorithm>> = {
   erfi: one(erfi),
   erfcx: one(erfcx),
   dawson: one(dawson),
-  erfinv: { real: (kit, [x]) => (x === undefined ? null : inverseOfIncreasing(kit, (y) => erf(kit, y), (y) => erfSlope(kit, y), x, [-64, 64])) },
+  erfinv: { real: (kit, [x]) => (x === undefined ? null : inverseOfIncreasing(kit, erf, erfSlope, x, [-64, 64])) },
   erfcinv: {
     real: (kit, [x]) => {
       if (x === undefined) return null;
-      const down = (y: Ball): Ball | null => erfc(kit, kit.a.negate(y));
-      const value = inverseOfIncreasing(kit, down, (y) => erfSlope(kit, y), x, [-200, 200]);
+      const down = (k: Kit<Ball>, y: Ball): Ball | null => erfc(k, k.a.negate(y));
+      const value = inverseOfIncreasing(kit, down, erfSlope, x, [-200, 200]);
       return value && kit.a.negate(value);
     },
   },

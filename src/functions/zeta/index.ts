@@ -4,6 +4,8 @@ import type { FunctionDescription } from '../description.ts';
 import { lift, minus, over, plus, pow, times } from '../compose.ts';
 import { asInteger } from '../exactForms.ts';
 import { names, subscripted } from '../naming.ts';
+import { enclosed } from '../enclosure/wrap.ts';
+import { zetaAlgorithms } from './enclosure.ts';
 import { etaAtInteger } from './exactZeta.ts';
 import { bernoulliNumberValue, bernoulliPolynomialDerivative, bernoulliPolynomialValue, eulerNumberValue } from './numbers.ts';
 import { clausenDerivative, clausenLocal, clausenValue, debyeDerivative, debyeLocal, inverseTangentIntegralLocal, polylogDerivative, polylogLocal, polylogValue } from './polylogarithm.ts';
@@ -11,7 +13,7 @@ import { hurwitzDerivative, hurwitzLocal, hurwitzValue, zetaDerivativeLocal, zet
 
 const { call, constant, difference, negation, number, sum } = build;
 
-export const zetaFunctions: readonly FunctionDescription[] = [
+const descriptions: readonly FunctionDescription[] = [
   { id: 'zeta', title: 'Riemann zeta function', arity: 1, local: zetaLocal, value: zetaValue, names: names({ latex: ['\\zeta', '\\operatorname{zeta}'], plain: ['zeta'], unicodeForm: ([s = '']) => `ζ(${s})`, mpmath: 'zeta', code: { cpp: 'riemann_zeta', python: 'zeta', julia: 'zeta', matlab: 'zeta' } }), derivative: ([s = number(0)]) => call('zetaDerivative', number(1), s), domain: 's is not 1', source: 'DLMF 25.2.1' },
   { id: 'zetaDerivative', title: 'derivative of the Riemann zeta function (order, s)', arity: 2, local: zetaDerivativeLocal, value: zetaDerivativeValue, derivative: ([n = number(0), s = number(0)], index) => (index === 1 ? call('zetaDerivative', plus(n, 1), s) : null), names: names({ latex: [], latexIndices: { count: 1, place: 'superscript' }, latexForm: ([n = '', s = '']) => `\\zeta^{(${n})}(${s})`, unicodeForm: ([n = '', s = '']) => (n === '1' ? `ζ′(${s})` : `ζ⁽${n}⁾(${s})`), mpmath: ([n = '', s = '']) => `zeta(${s},1,${n})` }), source: 'DLMF 25.2.7' },
   { id: 'hurwitzZeta', title: 'Hurwitz zeta function (s, a)', arity: 2, local: hurwitzLocal, value: hurwitzValue, derivative: hurwitzDerivative, names: names({ latex: ['\\zeta'], latexForm: (a) => `\\zeta(${a.join(', ')})`, unicodeForm: (a) => `ζ(${a.join(', ')})`, mpmath: 'zeta', code: { python: 'zeta', julia: 'zeta', matlab: 'hurwitzZeta' } }), source: 'DLMF 25.11.1' },
@@ -29,3 +31,5 @@ export const zetaFunctions: readonly FunctionDescription[] = [
   { id: 'eulerNumber', title: 'Euler number E_n', arity: 1, value: eulerNumberValue, names: names({ latex: [], latexLetters: ['E'], latexIndices: { count: 1, place: 'subscript' }, latexForm: ([n = '']) => `E_{${n}}`, unicodeForm: ([n = '']) => `E_${n}`, mpmath: 'eulernum', code: { matlab: 'euler' } }), source: 'DLMF 24.2.6' },
   { id: 'stieltjes', title: 'Stieltjes constant gamma_n', arity: 1, names: names({ latex: [], latexForm: ([n = '']) => `\\gamma_{${n}}`, unicodeForm: ([n = '']) => `γ_${n}`, mpmath: 'stieltjes' }), value: ([n]) => (n?.kind === 'number' && n.value.num === 0n ? constant('eulerGamma') : null), source: 'DLMF 25.2.5' },
 ];
+
+export const zetaFunctions = enclosed(descriptions, zetaAlgorithms);

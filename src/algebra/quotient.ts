@@ -11,6 +11,7 @@ import { commonMonomial, exponentIn, invertMonomial, isUnit, monomialKey, monomi
 import {
   collect,
   combine,
+  constantOf,
   contentOf,
   divideByInteger,
   divideExactly,
@@ -105,12 +106,19 @@ export function normalise(table: KernelTable, content: Rational, monomial: Monom
       n = divideByInteger(n, integer);
       c = Q.multiply(c, { num: integer, den: 1n });
     }
-    const common = n.length === 1 ? (n[0] as Term).monomial : monomialContent(n);
+    const common = n.length === 1 ? (n[0] as Term).monomial : separable(table, n, monomialContent(n));
     if (!isUnit(common)) {
       n = n.length === 1 ? ONE_POLYNOMIAL : shiftPolynomial(n, invertMonomial(common));
       m = multiplyMonomials(m, common);
     }
-    if (inRange(table, m)) break;
+    if (inRange(table, m)) {
+      const shared = isOnePolynomial(n) ? UNIT : sharedWith(table, m, n);
+      if (isUnit(shared)) break;
+      n = reduceByRelations(table, shiftPolynomial(n, shared));
+      m = multiplyMonomials(m, invertMonomial(shared));
+      mayCancel = true;
+      continue;
+    }
     const folded = foldMonomial(table, m);
     m = folded.monomial;
     c = Q.multiply(c, folded.content);
@@ -120,13 +128,37 @@ export function normalise(table: KernelTable, content: Rational, monomial: Monom
     }
     for (const factor of folded.denominator) d = insertFactor(table, d, factor.polynomial, factor.exponent);
     if (folded.denominator.length > 0) mayCancel = true;
-    if (isOnePolynomial(folded.numerator)) break;
   }
   if (d.length > 0 && mayCancel && !isOnePolynomial(n)) {
     const cancelled = cancelFactors(table, n, d);
     if (cancelled.changed) return normalise(table, c, m, cancelled.numerator, cancelled.denominator, false);
   }
   return raw(c, m, n, d);
+}
+
+/** Of a common monomial the part that may stand before the sum: a kernel with a relation only if no other power of it occurs, so that the form is unique. */
+function separable(table: KernelTable, f: Polynomial, common: Monomial): Monomial {
+  if (!common.kernels.some((k) => table.relations[k])) return common;
+  return keepKernels(common, (k, e) => {
+    const relation = table.relations[k];
+    return !relation || (relation.pure && f.every((t) => compareExponents(exponentIn(t.monomial, k), e) === 0));
+  });
+}
+
+/** The part of a monomial that must be multiplied into the sum: powers of kernels with a relation that occur in it as well, and of algebraic integers always. */
+function sharedWith(table: KernelTable, m: Monomial, f: Polynomial): Monomial {
+  if (!m.kernels.some((k) => table.relations[k])) return UNIT;
+  const inside = kernelsIn(f);
+  return keepKernels(m, (k) => {
+    const relation = table.relations[k];
+    return relation ? !relation.pure || inside.has(k) : false;
+  });
+}
+
+function keepKernels(m: Monomial, keep: (kernel: number, exponent: Exponent) => boolean): Monomial {
+  const kept = m.kernels.map((k, i) => keep(k, m.exponents[i] as Exponent));
+  if (kept.every((x) => x)) return m;
+  return { kernels: m.kernels.filter((_, i) => kept[i]), exponents: m.exponents.filter((_, i) => kept[i]) };
 }
 
 /** Applies sin^2 + cos^2 = 1 and its kin one way or the other where that leaves fewer terms. */
@@ -194,10 +226,16 @@ function foldMonomial(table: KernelTable, monomial: Monomial): { content: Ration
         content = Q.multiply(content, Q.power({ num: only.coefficient, den: 1n }, count));
         m = multiplyMonomials(m, { kernels: only.monomial.kernels, exponents: only.monomial.exponents.map((x) => multiplyExponents(x, count)) });
       } else if (count > 0) numerator = multiplyReduced(table, numerator, powerOfPolynomial(relation.value, count));
-      else {
+      else if (relation.numeric) {
+        const cleared = clearAlgebraic(table, relation.value);
+        const norm = constantOf(cleared.norm);
+        if (norm === null || norm === 0n) throw new RangeError('the norm of an algebraic number is a rational other than zero');
+        content = Q.multiply(content, Q.power(Q.rational(norm), count));
+        for (let j = 0; j < -count; j += 1) numerator = multiplyReduced(table, numerator, cleared.cofactor);
+      } else {
         const sign = contentOf(relation.value);
         content = Q.multiply(content, Q.power({ num: sign, den: 1n }, count));
-        denominator.push({ polynomial: divideByInteger(relation.value, sign), exponent: -count });
+        for (const f of squareFreeFactors(divideByInteger(relation.value, sign), table.check)) denominator.push({ polynomial: f.polynomial, exponent: -count * f.exponent });
       }
       break;
     }
@@ -404,8 +442,8 @@ function clearAlgebraic(table: KernelTable, f: Polynomial): { readonly cofactor:
 function conjugateCofactor(table: KernelTable, f: Polynomial, kernel: number): { readonly cofactor: Polynomial; readonly norm: Polynomial } {
   const relation = table.relations[kernel];
   if (!relation) throw new RangeError('no relation to clear');
-  let step: Exponent = relation.period;
-  for (const t of f) {
+  let step: Exponent = relation.pure ? relation.period : 1;
+  for (const t of relation.pure ? f : []) {
     const e = exponentIn(t.monomial, kernel);
     if (e !== 0) step = commonStep(step, e);
   }

@@ -7,9 +7,10 @@ import type { Kernel } from './kernel.ts';
 import { exponentIn, isUnit, monomialKey, multiplyMonomials, UNIT, withoutKernel, type Monomial } from './monomial.ts';
 import { contentOf, divideByInteger, isOnePolynomial, kernelsIn, ONE_POLYNOMIAL, shiftPolynomial, type Polynomial, type Term } from './polynomial.ts';
 import { addElements, elementKey, invertElement, isQuotient, kernelsOf, multiplyElements, negateElement, normalise, partsOf, reduceByRelations, scaleElement, type Factor, type Quotient } from './quotient.ts';
+import { POSITIVE } from './signs.ts';
 import { asElement } from './split.ts';
 import { squareFreeFactors } from './squareFree.ts';
-import { asSingleCosine } from './unitCircle.ts';
+import { asSingleCosine, cosineOfPi } from './unitCircle.ts';
 import type { Element } from './types.ts';
 
 /** base^exponent, gathered before writing. */
@@ -17,6 +18,7 @@ interface Power {
   readonly rank: number;
   readonly order: number;
   readonly base: () => Expression;
+  readonly positive: boolean;
   exponent: Element;
 }
 
@@ -73,7 +75,8 @@ function inCosines(ctx: Context, a: Quotient): Expression | null {
   const { shape } = ctx.table.kernels[kernel] as Kernel;
   if (shape.kind !== 'cosine') return null;
   const written = (r: Rational, coefficient: Element): Expression => {
-    if (r.num === 0n) return toExpression(ctx, coefficient);
+    // Angles with radicals: sqrt(3) rather than 2 cos(pi/6).
+    if (r.den <= 6n || r.den === 12n) return toExpression(ctx, multiplyElements(ctx.table, coefficient, cosineOfPi(ctx, r)));
     const sine = Q.compare(r, Q.rational(1, 4)) > 0;
     const angle = sine ? Q.subtract(Q.HALF, r) : r;
     const call = ctx.table.intern(`written ${sine ? 'sin' : 'cos'} ${Q.toText(angle)}`, () => ({
@@ -121,7 +124,7 @@ function distributes(ctx: Context, c: Rational, f: Polynomial): boolean {
   if (Q.isOne(c) || (c.num === -1n && c.den === 1n)) return true;
   const shapes = [...kernelsIn(f)].map((k) => ctx.table.kernels[k] as Kernel);
   const numeric = shapes.every((k) => k.shape.kind !== 'parameter');
-  if (numeric && (c.den === 1n || shapes.some((k) => k.relation?.numeric !== true))) return true;
+  if (numeric && (c.den === 1n || (shapes.some((k) => k.relation?.numeric !== true) && f.some((t) => Q.gcd(t.coefficient, c.den) > 1n)))) return true;
   if (c.den === 1n) return false;
   return f.some((t) => (t.coefficient * c.num) % c.den === 0n);
 }
@@ -154,8 +157,12 @@ function writeSum(ctx: Context, c: Rational, f: Polynomial): Expression {
   const signed = (t: Term): Rational => Q.multiply(c, { num: t.coefficient, den: 1n });
   const first = order[0];
   const last = order[order.length - 1];
-  // 1 - v^2 rather than -v^2 + 1.
-  if (first && last && signed(first).num < 0n && signed(last).num > 0n) order = [...order].reverse();
+  // 1 - v^2 rather than -v^2 + 1, and any positive term before a negative one.
+  if (first && last && signed(first).num < 0n) {
+    const positive = order.find((t) => signed(t).num > 0n);
+    if (signed(last).num > 0n) order = [...order].reverse();
+    else if (positive) order = [positive, ...order.filter((t) => t !== positive)];
+  }
   const written = joinLogarithms(ctx, order.map((t) => ({ coefficient: signed(t), monomial: t.monomial })));
   return build.sum(...written);
 }
@@ -201,10 +208,10 @@ const isFactor = (x: ExtraFactor | Factor): x is Factor => 'polynomial' in x;
 /** content * monomial * extra / denominator as one product or quotient; extra Factors carry minus their exponent. */
 function writeProduct(ctx: Context, content: Rational, monomial: Monomial, extra: readonly (ExtraFactor | Factor)[], denominator: readonly Factor[]): Expression {
   const powers = new Map<string, Power>();
-  const put = (key: string, rank: number, order: number, base: () => Expression, exponent: Element): void => {
+  const put = (key: string, rank: number, order: number, base: () => Expression, exponent: Element, positive = false): void => {
     const known = powers.get(key);
     if (known) known.exponent = addElements(ctx.table, known.exponent, exponent);
-    else powers.set(key, { rank, order, base, exponent });
+    else powers.set(key, { rank, order, base, exponent, positive });
   };
   const radicals = new Map<number, bigint>();
   let exponential: Element | null = null;
@@ -232,10 +239,10 @@ function writeProduct(ctx: Context, content: Rational, monomial: Monomial, extra
         put(elementKey(shape.base), RANK.root, index, () => toExpression(ctx, shape.base), r);
         break;
       case 'parameter':
-        put(elementKey(kernelElement(ctx, kernel)), RANK.parameter, index, () => build.symbol(shape.name), r);
+        put(elementKey(kernelElement(ctx, kernel)), RANK.parameter, index, () => build.symbol(shape.name), r, ctx.signs.ofKernel(kernel) === POSITIVE);
         break;
       case 'constant':
-        put(elementKey(kernelElement(ctx, kernel)), RANK.constant, index, () => build.constant(shape.name), r);
+        put(elementKey(kernelElement(ctx, kernel)), RANK.constant, index, () => build.constant(shape.name), r, true);
         break;
       case 'imaginary':
         put(elementKey(kernelElement(ctx, kernel)), RANK.imaginary, index, () => build.constant('i'), r);
@@ -261,18 +268,13 @@ function writeProduct(ctx: Context, content: Rational, monomial: Monomial, extra
   }
 
   joinQuotients(ctx, powers, monomial);
+  joinAbsolutes(ctx, powers, monomial);
   const rankOf = (p: Power): number => (rationalOf(p.exponent) ? p.rank : Math.max(p.rank, RANK.function));
   const ordered = [...powers.values()].sort((x, y) => rankOf(x) - rankOf(y) || x.order - y.order);
   const numbers: Expression[] = [];
-  // sqrt(2) sqrt(pi) is written sqrt(2 pi).
-  const halves = [...powers.values()].filter((p) => (p.rank === RANK.parameter || p.rank === RANK.constant) && isHalf(p.exponent));
-  const [half] = halves;
-  for (const [q, value] of [...radicals].sort((x, y) => x[0] - y[0])) {
-    if (q === 2 && halves.length === 1 && half) {
-      half.exponent = Q.ZERO;
-      numbers.push(build.power(build.product(build.number(value), half.base()), Q.HALF));
-    } else numbers.push(build.power(build.number(value), Q.rational(1, q)));
-  }
+  for (const [q, value] of [...radicals].sort((x, y) => x[0] - y[0])) if (q !== 2) numbers.push(build.power(build.number(value), Q.rational(1, q)));
+  const root = joinedSquareRoot([...powers.values()], radicals.get(2) ?? 1n);
+  if (root) numbers.unshift(root);
   let placed = false;
   const place = (): void => {
     if (!placed) top.push(...numbers);
@@ -303,6 +305,25 @@ function writeProduct(ctx: Context, content: Rational, monomial: Monomial, extra
   if (size.den !== 1n) bottom.unshift(build.number(size.den));
   const whole = bottom.length === 0 ? build.product(...top) : build.quotient(build.product(...top), build.product(...bottom));
   return content.num < 0n !== flipped ? build.negation(whole) : whole;
+}
+
+/**
+ * Square roots of positive numbers, constants and parameters under one root: sqrt(2 pi), sqrt(a b), sqrt(2/pi); the powers used up get exponent zero.
+ * Of a parameter of unknown sign one root may join a number, since sqrt(2) sqrt(a) = sqrt(2 a) for all a.
+ */
+function joinedSquareRoot(powers: readonly Power[], integer: bigint): Expression | null {
+  const candidates = powers.filter((p) => (p.rank === RANK.parameter || p.rank === RANK.constant) && p.positive);
+  const above = candidates.filter((p) => isHalf(p.exponent));
+  const unknown = powers.filter((p) => p.rank === RANK.parameter && !p.positive && isHalf(p.exponent));
+  const [alone] = unknown;
+  if (unknown.length === 1 && alone) above.push(alone);
+  const below = unknown.length === 0 ? candidates.filter((p) => 'num' in p.exponent && p.exponent.num === -1n && p.exponent.den === 2n) : [];
+  if (integer === 1n && above.length === 0) return null;
+  // A lone root below stays there: 1/sqrt(pi); with something above they share one: sqrt(2/pi).
+  const top = build.product(...(integer === 1n ? [] : [build.number(integer)]), ...above.map((p) => p.base()));
+  const bottom = build.product(...below.map((p) => p.base()));
+  for (const p of [...above, ...below]) p.exponent = Q.ZERO;
+  return build.power(below.length === 0 ? top : build.quotient(top, bottom), Q.HALF);
 }
 
 const isHalf = (e: Element): boolean => 'num' in e && e.num === 1n && e.den === 2n;
@@ -340,7 +361,23 @@ function joinQuotients(ctx: Context, powers: Map<string, Power>, monomial: Monom
     c.exponent = Q.add(cr, common);
     const args = shape.args;
     const name = shape.id === 'sin' ? 'tan' : 'tanh';
-    powers.set(`${name} ${monomialKey(monomial)}${index}`, { rank: RANK.function, order: index, base: () => build.call(name, ...args.map((x) => toExpression(ctx, x))), exponent: common });
+    powers.set(`${name} ${monomialKey(monomial)}${index}`, { rank: RANK.function, order: index, base: () => build.call(name, ...args.map((x) => toExpression(ctx, x))), exponent: common, positive: false });
+  }
+}
+
+/** |a|/a^2 is written 1/|a|. */
+function joinAbsolutes(ctx: Context, powers: Map<string, Power>, monomial: Monomial): void {
+  for (const index of monomial.kernels) {
+    const kernel = ctx.table.kernels[index] as Kernel;
+    if (kernel.shape.kind !== 'abs') continue;
+    const own = powers.get(elementKey(kernelElement(ctx, kernel)));
+    const inner = powers.get(elementKey(kernel.shape.argument));
+    const e = inner ? rationalOf(inner.exponent) : null;
+    if (!own || !inner || !e || e.num >= 0n || e.den !== 1n) continue;
+    const even = e.num % 2n === 0n ? e : Q.add(e, Q.ONE);
+    if (even.num === 0n) continue;
+    own.exponent = addElements(ctx.table, own.exponent, even);
+    inner.exponent = Q.subtract(e, even);
   }
 }
 

@@ -46,6 +46,8 @@ describe('sines of rational multiples of pi', () => {
     [b.call('sin', angle(1, 7)), 'sin(pi/7)'],
     [b.call('cos', angle(15, 7)), 'cos(pi/7)'],
     [b.call('sin', angle(1, 24)), 'sin(pi/24)'],
+    [b.product(b.call('tan', angle(1, 25)), b.call('cot', angle(1, 25))), '1'],
+    [b.product(b.call('tan', angle(1, 9)), b.call('tan', angle(2, 9)), b.call('tan', angle(4, 9))), 'sqrt(3)'],
   ])('%#', (e, expected) => expect(simplify(e)).toBe(expected));
 
   it.each([
@@ -88,7 +90,9 @@ describe('branches', () => {
     [sq(b.power(s('a'), 2)), [], 'abs(a)'],
     [sq(b.power(s('a'), 2)), positive('a'), 'a'],
     [sq(b.product(s('a'), s('c'))), [], 'sqrt(a*c)'],
-    [b.product(sq(s('a')), sq(s('c'))), positive('a', 'c'), 'sqrt(a)*sqrt(c)'],
+    [b.product(sq(s('a')), sq(s('c'))), positive('a', 'c'), 'sqrt(a*c)'],
+    [b.product(sq(s('a')), sq(s('c'))), [], 'sqrt(a)*sqrt(c)'],
+    [b.quotient(b.call('abs', s('a')), b.power(s('a'), 4)), [], '1/abs(a)^3'],
     [b.power(b.power(s('a'), 3), Q.rational(1, 3)), positive('a'), 'a'],
     [sq(b.sum(b.power(s('a'), 2), b.product(n(2), s('a')), n(1))), [], 'abs(a + 1)'],
     [b.power(b.power(b.call('abs', s('a')), 2), Q.ONE), [], 'a^2'],
@@ -138,6 +142,10 @@ describe('written as an author writes', () => {
     [b.product(s('alpha'), b.power(s('a'), b.difference(s('alpha'), n(1)))), 'alpha*a^(alpha - 1)'],
     [b.quotient(sq(b.product(n(2), pi)), n(12)), 'sqrt(2*pi)/12'],
     [b.product(r(1, 2), b.call('log', b.product(n(2), pi))), 'log(2*pi)/2'],
+    [sq(b.quotient(n(2), pi)), 'sqrt(2/pi)'],
+    [b.quotient(n(2), sq(pi)), '2/sqrt(pi)'],
+    [b.quotient(b.sum(b.call('log', n(2)), n(1), b.negation(b.constant('eulerGamma'))), n(4)), '(log(2) - eulerGamma + 1)/4'],
+    [b.sum(b.product(n(-2), b.call('log', n(2))), b.product(n(2), b.constant('eulerGamma')), n(-1)), '(2*eulerGamma - 2*log(2) - 1)'],
     [b.call('tan', s('a')), 'tan(a)'],
     [b.quotient(n(1), b.power(b.call('cos', s('a')), 2)), '1/cos(a)^2'],
     [b.product(b.constant('e'), b.power(b.constant('e'), s('a'))), 'e^(a + 1)'],

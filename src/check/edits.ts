@@ -92,6 +92,7 @@ function numberEdits(here: readonly PrintedTerm[], truncated: Truncated, differe
     const printed = sample(found.coefficient);
     if (printed === null) continue;
     const target = printed + delta;
+    out.push(...factorialEdits(term, truncated, target, found.size, setting));
     for (const literal of literalsOf(term.value, setting)) {
       if (!literal.span || !Q.isInteger(literal.value)) continue;
       const valueWith = (m: bigint): number | null => {
@@ -105,6 +106,30 @@ function numberEdits(here: readonly PrintedTerm[], truncated: Truncated, differe
       }
     }
   }
+  return out;
+}
+
+/** A factorial lost or invented: 3! for 3, 3 for 3!. */
+function factorialEdits(term: PrintedTerm, truncated: Truncated, target: number, size: Size, setting: Setting): readonly Edit[] {
+  const out: Edit[] = [];
+  const offer = (node: Expression, replacement: Expression, text: string, place: Span): void => {
+    const changed = leading(setting, replaceNode(term.value, node, replacement));
+    const value = changed.kind === 'monomial' && compareSizes(changed.size, size) === 0 ? sample(changed.coefficient) : null;
+    if (value !== null && Math.abs(value - target) <= 1e-9 * Math.abs(target)) out.push({ side: replaceNode(truncated.side, node, replacement), place, text, kind: 'number', cost: 0.5 });
+  };
+  const visit = (node: Expression): void => {
+    if (node.kind === 'call' && node.function === 'factorial' && node.args[0]?.kind === 'number' && node.span) {
+      offer(node, node.args[0], Q.toText(node.args[0].value), node.span);
+      return;
+    }
+    if (node.kind === 'power' && dependsOn(node.base, setting.variable)) return;
+    if (node.kind === 'number' && node.span && Q.isInteger(node.value) && node.value.num > 2n && node.value.num < 30n) offer(node, build.call('factorial', node), `${node.value.num}!`, node.span);
+    mapChildren(node, (c) => {
+      visit(c);
+      return c;
+    });
+  };
+  visit(term.node);
   return out;
 }
 

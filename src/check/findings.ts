@@ -7,6 +7,8 @@ import { type Claim, isTranscendental } from './claims.ts';
 import type { FoundFormula } from './formulas.ts';
 import { explicitPart, type General, generalIn, judgeGeneral } from './generalClaims.ts';
 import { type Hint, judge, type Judgement } from './judge.ts';
+import { calibrated } from './calibrate.ts';
+import { normalise } from './normalise.ts';
 import { notationOf } from './notation.ts';
 import type { Setting } from './context.ts';
 import { settingsFor, type Around, type Asked, type Choice } from './setting.ts';
@@ -28,10 +30,11 @@ interface Tried {
  * The finding for one claim with its function known; null where it turns out not to be a claim (an identity, an equation to solve).
  * `lenient`: the function is only presumed, so that nothing fails.
  */
-export function findingOf(claim: Claim, f: Expression, asked: Asked, place: Place, options: { readonly lenient?: string } = {}): Finding | null {
-  const choices = settingsFor(f, claim.side, asked, place.around);
+export function findingOf(printed: Claim, given: Expression, asked: Asked, place: Place, options: { readonly lenient?: string } = {}): Finding | null {
+  const choices = settingsFor(given, printed.side, asked, place.around);
   const tried: Tried[] = [];
   for (const choice of choices) {
+    const { f, claim } = prepared(given, printed, choice.setting);
     const general = generalIn(f, claim.side, choice.setting);
     if (general) {
       const finding = generalFinding(claim, f, general, choice, place, options);
@@ -45,11 +48,18 @@ export function findingOf(claim: Claim, f: Expression, asked: Asked, place: Plac
   }
   const best = tried.reduce<Tried | null>((a, b) => (a === null || matchedIn(b) > matchedIn(a) ? b : a), null);
   if (!best) return null;
+  const { f, claim } = prepared(given, printed, best.choice.setting);
   if (best.judgement.kind === 'undecided') return meant(claim, f, best.choice.setting) ? undecided(claim, place, best.judgement.reason) : null;
   if (best.judgement.kind !== 'fails') return null;
   if (!isHeldAgainst(claim, f, best, tried.length > 1, place)) return meant(claim, f, best.choice.setting) && hasMarks(claim.side) ? undecided(claim, place, 'It is not plain in which quantity, and where, this is an expansion; say so with a note such as leading-order: small x.') : null;
   if (options.lenient !== undefined) return undecided(claim, place, `Taken as ${options.lenient} the claim does not hold; its definition does not stand in this document.`);
   return failing(claim, f, best.choice.setting, best.judgement, place);
+}
+
+/** Short writings written out, and a factor that only the printed side has fixed by the leading terms. */
+function prepared(given: Expression, printed: Claim, setting: Setting): { readonly f: Expression; readonly claim: Claim } {
+  const { f, side } = normalise(given, printed.side, setting.variable);
+  return { f, claim: { ...printed, side: calibrated(f, side, setting) } };
 }
 
 /** A claim with a general term: its explicit part first, then its first terms, then a proof. `next`: try the next setting. */

@@ -7,6 +7,7 @@ import { type Claim, claimsOf } from './claims.ts';
 import { type Definitions, definitionsIn, resolve } from './definitions.ts';
 import { findingOf, unresolved, type Place } from './findings.ts';
 import { type FoundFormula, formulasOf } from './formulas.ts';
+import { isGridName } from './normalise.ts';
 import { quantitiesNamed } from './quantities.ts';
 import type { Asked } from './setting.ts';
 import { hasMarks } from './truncated.ts';
@@ -77,23 +78,33 @@ function claimsIn(formula: FoundFormula, given: Expression | null): readonly Cla
 }
 
 function checkClaim(claim: Claim, given: Expression | null, definitions: Definitions, asked: Asked, place: Place): Finding | null {
-  if (claim.function) return findingOf(claim, claim.function, asked, place);
+  const printedName = claim.function ? wordOf(claim.function, place.text) : null;
+  if (claim.function && printedName === null) return findingOf(claim, claim.function, asked, place);
   if (given) return findingOf(claim, given, asked, place);
-  if (!claim.name) return null;
+  const own = claim.name ?? claim.function;
+  if (!own) return null;
+  if (isGridName(own)) return findingOf(claim, own, asked, place);
   let failed: Finding | null = null;
-  for (const value of resolve(definitions, claim.name, place.formula.span.start)) {
+  for (const value of resolve(definitions, own, place.formula.span.start)) {
     const finding = findingOf(claim, value, asked, place);
     if (finding?.verdict === 'holds') return finding;
     failed ??= finding;
   }
   if (failed) return failed;
-  const printed = place.text.slice(claim.name.span?.start ?? 0, claim.name.span?.end ?? 0).replace(/\s/g, '');
+  const printed = printedName ?? place.text.slice(own.span?.start ?? 0, own.span?.end ?? 0).replace(/\s/g, '');
   for (const quantity of quantitiesNamed(printed, symbolsOf(claim.side))) {
     const variable = asked.variable ?? build.symbol(quantity.variable);
     const finding = findingOf(claim, quantity.value, { ...asked, variable, point: asked.point ?? build.number(0) }, place, { lenient: quantity.title });
     if (finding?.verdict === 'holds') return finding;
   }
   return hasMarks(claim.side) || claim.relation === 'about' ? unresolved(claim, place) : null;
+}
+
+/** Capital letters without a gap (KE) that were read as a product are one name. */
+function wordOf(e: Expression, text: string): string | null {
+  if (e.kind !== 'product' || !e.span || !e.factors.every((f) => f.kind === 'symbol' && /^[A-Z]$/.test(f.name))) return null;
+  const written = text.slice(e.span.start, e.span.end);
+  return /^[A-Z]{2,}$/.test(written) ? written : null;
 }
 
 function symbolsOf(e: Expression): readonly string[] {

@@ -4,7 +4,7 @@ import { build, type CallNode, type Expression, Q } from '../expression/index.ts
 import { acceptsArity, describe, type FunctionDescription } from '../functions/index.ts';
 import { Declined } from '../outcome.ts';
 import {
-  add, compareEventually, divide, eventualSign, exactOf, exponential, growth, hyperbolic, inverse, type InverseFunction, logarithm, type Multi, negate, power,
+  add, divide, eventualSign, exactOf, exponential, growth, hyperbolic, imaginaryPart, inverse, type InverseFunction, isRealMulti, logarithm, mapConstants, type Multi, multiply, negate, power, realPart,
   Series, sineCosine, split, subtract, withExact,
 } from '../series/index.ts';
 import { evaluateDescribed } from './described.ts';
@@ -14,6 +14,8 @@ export type Evaluate = (s: Session, e: Expression) => Multi;
 
 export function evaluateCall(s: Session, e: CallNode, evaluate: Evaluate): Multi {
   const c = s.context;
+  const undone = inverseOfItself(s, e, evaluate);
+  if (undone !== null) return undone;
   const args = e.args.map((a) => evaluate(s, a));
   const description = describe(e.function);
   const direct = elementary[e.function];
@@ -26,6 +28,26 @@ export function evaluateCall(s: Session, e: CallNode, evaluate: Evaluate): Multi
   if (!description) throw new Declined('unknown-function', `The function ${e.function} is not known; write it out or choose a known name.`);
   if (description.definition) return evaluateDefinition(s, description, args, evaluate);
   return evaluateDescribed(s, description, args, evaluate);
+}
+
+const inverses: Readonly<Record<string, string>> = { asin: 'sin', acos: 'cos', atan: 'tan', asinh: 'sinh', atanh: 'tanh', log: 'exp' };
+
+/** asin(sin u) = u and the like, where u is real and its limit lies inside the principal range. */
+function inverseOfItself(s: Session, e: CallNode, evaluate: Evaluate): Multi | null {
+  const c = s.context;
+  const [inner] = e.args;
+  const function_ = inverses[e.function];
+  if (!inner || !function_ || e.args.length !== 1) return null;
+  const argument = inner.kind === 'call' && inner.function === function_ && inner.args.length === 1 ? inner.args[0] : function_ === 'exp' && inner.kind === 'power' && inner.base.kind === 'constant' && inner.base.name === 'e' ? inner.exponent : undefined;
+  if (!argument) return null;
+  const u = evaluate(s, argument);
+  if (!(u instanceof Series) || !isRealMulti(c, u)) return null;
+  if (e.function === 'asinh' || e.function === 'atanh' || e.function === 'log') return u;
+  const { large, constant } = split(c, u);
+  if (large) return null;
+  const pi = c.field.fromExpression(build.constant('pi'));
+  const [low, high] = e.function === 'acos' ? [Q.ZERO, pi] : [c.field.multiply(pi, Q.rational(-1, 2)), c.field.multiply(pi, Q.HALF)];
+  return c.field.compare(constant, low) === 1 && c.field.compare(constant, high) === -1 ? u : null;
 }
 
 /** The same call of the same series is the same result. */
@@ -91,19 +113,24 @@ const elementary: Readonly<Record<string, Elementary>> = {
   acosh: inverseOf('acosh'),
   atanh: inverseOf('atanh'),
   abs: (s, f) => {
-    const sign = eventualSign(s.context, f);
-    if (sign === 'complex') throw new Declined('no-expansion', 'The absolute value of a complex quantity is not expanded; write it as a square root of the sum of squares.');
+    const sign = realSign(s, f);
+    if (sign === 'complex') {
+      const real = mapConstants(s.context, f, (e) => realPart(s.context, e));
+      const imaginary = mapConstants(s.context, f, (e) => imaginaryPart(s.context, e));
+      s.context.notes.sided = true;
+      return power(s.context, add(s.context, multiply(s.context, real, real), multiply(s.context, imaginary, imaginary)), Q.HALF);
+    }
     noteSide(s, f);
     return sign === -1 ? negate(s.context, f) : f;
   },
   sign: (s, f) => {
-    const sign = eventualSign(s.context, f);
+    const sign = realSign(s, f);
     if (sign === 'complex') throw new Declined('no-expansion', 'The sign of a complex quantity is not expanded; use a real argument.');
     noteSide(s, f);
     return Q.rational(sign);
   },
   heaviside: (s, f) => {
-    const sign = eventualSign(s.context, f);
+    const sign = realSign(s, f);
     if (sign === 'complex') throw new Declined('no-expansion', 'The step function of a complex quantity is not expanded; use a real argument.');
     noteSide(s, f);
     return sign === 0 ? Q.HALF : Q.rational(sign === 1 ? 1 : 0);
@@ -112,6 +139,11 @@ const elementary: Readonly<Record<string, Elementary>> = {
   ceil: (s, f) => negate(s.context, rounded(s, negate(s.context, f), (q) => Q.floor(q))),
   trunc: (s, f) => (eventualSign(s.context, f) === -1 ? negate(s.context, rounded(s, negate(s.context, f), (q) => Q.floor(q))) : rounded(s, f, (q) => Q.floor(q))),
 };
+
+/** Sign of f for small t; 'complex' where one of its first terms is not real. */
+function realSign(s: Session, f: Multi): -1 | 0 | 1 | 'complex' {
+  return isRealMulti(s.context, f) ? eventualSign(s.context, f) : 'complex';
+}
 
 /** A function of the sign of f is the same on both sides only if f keeps away from zero. */
 function noteSide(s: Session, f: Multi): void {
@@ -133,7 +165,7 @@ const extreme =
   (wanted: 1 | -1): Several =>
   (s, args) =>
     args.reduce((best, next) => {
-      const sign = compareEventually(s.context, next, best);
+      const sign = realSign(s, subtract(s.context, next, best));
       if (sign === 'complex') throw new Declined('no-expansion', 'The largest or smallest of complex quantities has no meaning; use real arguments.');
       noteSide(s, subtract(s.context, next, best));
       return sign === wanted ? next : best;
@@ -145,8 +177,8 @@ const compound: Readonly<Record<string, Several>> = {
   atan2: (s, [y, x]) => {
     const c = s.context;
     if (y === undefined || x === undefined) throw new Declined('bad-request', 'atan2 takes two arguments, y and x.');
-    const right = eventualSign(c, x);
-    const up = eventualSign(c, y);
+    const right = realSign(s, x);
+    const up = realSign(s, y);
     if (right === 'complex' || up === 'complex') throw new Declined('no-expansion', 'atan2 takes real arguments.');
     const pi = c.field.fromExpression(build.constant('pi'));
     if (right === 0) return up === 0 ? Q.ZERO : c.field.multiply(pi, Q.rational(up, 2));

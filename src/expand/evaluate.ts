@@ -2,7 +2,7 @@
 import { build, children, type Expression, Q } from '../expression/index.ts';
 import { Declined } from '../outcome.ts';
 import {
-  add, divide, eventualSign, exactOf, exponential, generalPower, isLiteralOne, isLiteralZero, isRational, monomialOf, multiply, negate, type Multi, orderSeries, power,
+  add, divide, eventualSign, exactOf, exponential, generalPower, isLiteralOne, isLiteralZero, isRational, isRealMulti, monomialOf, multiply, negate, type Multi, orderSeries, power,
   Series, theta,
 } from '../series/index.ts';
 import { evaluateApply } from './apply.ts';
@@ -116,6 +116,7 @@ function evaluateRoot(s: Session, degree: Expression, radicand: Expression): Mul
   const f = evaluate(s, radicand);
   const exponent = isRational(n) && n.num !== 0n ? Q.reciprocal(n) : c.field.divide(Q.ONE, n);
   const odd = isRational(n) && n.den === 1n && n.num % 2n !== 0n;
+  if (odd && !isRealMulti(c, f)) throw new Declined('no-expansion', 'The real root of a quantity that is not real has no meaning; write a power instead.');
   if (odd && f instanceof Series && eventualSign(c, f) === -1) return negate(c, power(c, negate(c, f), exponent));
   return power(c, f, exponent);
 }

@@ -2,7 +2,7 @@
 import type { Element } from '../algebra/types.ts';
 import { build, type Expression, Q } from '../expression/index.ts';
 import { Declined } from '../outcome.ts';
-import { addElements, type Context, exactOf, isOscillating, isRational, type Multi, negateElement, nextTerm, nextTermOrOrder, plainText, type ScaleElement, Series } from '../series/index.ts';
+import { addElements, type Context, exactOf, isOscillating, isRational, type Multi, negateElement, nextTerm, nextTermOrOrder, oscillatingParts, plainText, type ScaleElement, Series } from '../series/index.ts';
 
 /** One monomial: coefficient * t^power * L^log * product of element^exponent * oscillation. With `order` only its size is known. */
 export interface RawTerm {
@@ -55,31 +55,7 @@ function* constantTerms(c: Context, e: Element, outer: readonly Factor[]): Gener
     yield { ...shape, coefficient: e, order: false };
     return;
   }
-  for (const part of oscillatingParts(c, c.field.toExpression(e))) yield { ...shape, coefficient: part.coefficient, oscillation: part.factor, order: false };
-}
-
-/** A sum of products, each as a constant and a factor that oscillates. */
-function oscillatingParts(c: Context, tree: Expression): { readonly coefficient: Element; readonly factor: Expression | null }[] {
-  const depends = (e: Expression): boolean => c.field.parameters(c.field.fromExpression(e)).includes(c.local);
-  const parts: { coefficient: Element; factor: Expression | null }[] = [];
-  const visit = (e: Expression, constants: readonly Expression[], factors: readonly Expression[]): void => {
-    if (e.kind === 'negation') return visit(e.operand, [...constants, build.number(-1)], factors);
-    if (e.kind === 'sum' && factors.length === 0) return e.terms.forEach((t) => visit(t, constants, factors));
-    if (e.kind === 'quotient' && !depends(e.denominator)) return visit(e.numerator, [...constants, build.power(e.denominator, -1)], factors);
-    if (e.kind === 'product') {
-      const fixed = e.factors.filter((f) => !depends(f));
-      const moving = e.factors.filter(depends);
-      const [only] = moving;
-      if (moving.length === 1 && only && (fixed.length > 0 || only.kind !== 'product')) return visit(only, [...constants, ...fixed], factors);
-      return visit2(moving, [...constants, ...fixed]);
-    }
-    return visit2(depends(e) ? [e] : [], depends(e) ? constants : [...constants, e]);
-  };
-  const visit2 = (moving: readonly Expression[], constants: readonly Expression[]): void => {
-    parts.push({ coefficient: c.field.fromExpression(build.product(...constants)), factor: moving.length > 0 ? build.product(...moving) : null });
-  };
-  visit(tree, [], []);
-  return parts;
+  for (const part of oscillatingParts(c, e)) yield { ...shape, coefficient: part.coefficient, oscillation: part.factor, order: false };
 }
 
 /** Sorts scale elements into the power of t, the power of L and the rest. The bound of an O-term adds its own slower factors. */

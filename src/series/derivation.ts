@@ -1,7 +1,7 @@
 /** t d/dt of multiseries on every scale. */
 import { Q } from '../expression/index.ts';
 import { Declined } from '../outcome.ts';
-import { isOscillating } from './exponential.ts';
+import { isOscillating } from './oscillation.ts';
 import { type Context, addElements, isLiteralZero, type Multi, type ScaleElement, Series, unnamed } from './multi.ts';
 import { add, monomial, multiply, scaleBy } from './ring.ts';
 import { mapStream } from './stream.ts';

@@ -2,9 +2,11 @@
 import type { Element } from '../algebra/types.ts';
 import { build, Q } from '../expression/index.ts';
 import { Declined } from '../outcome.ts';
+import { imaginaryPart, mapConstants } from './complex.ts';
 import { signOfExponent } from './exponent.ts';
 import { decideSign, isZero, leading, monomialOf } from './leading.ts';
 import { addElements, type Context, exactOf, isRational, type Lead, type Multi, multiplyElements, negateElement, Series, type Stream, unnamed } from './multi.ts';
+import { isOscillating, keepsFromZero } from './oscillation.ts';
 import { plainText } from './plain.ts';
 import { add, monomial, multiply, negate, scaleBy, shift, subtract } from './ring.ts';
 import { comparable, insertExponential, logarithmOf } from './scale.ts';
@@ -12,11 +14,8 @@ import { split } from './split.ts';
 import { dropTerms, finiteStream, mapStream } from './stream.ts';
 import { expTail, inverseTail, logTail, powerTail, reciprocalElement } from './tail.ts';
 
-/** A constant that depends on t is a bounded oscillating function; it may have zeros. */
-export const isOscillating = (c: Context, e: Element): boolean => !isRational(e) && c.field.parameters(e).includes(c.local);
-
 function refuseOscillating(c: Context, e: Element, what: string): void {
-  if (isOscillating(c, e)) throw new Declined('no-expansion', `${what} an oscillating function that may vanish has no expansion; ask for a point where it stays away from zero.`);
+  if (isOscillating(c, e) && !keepsFromZero(c, e)) throw new Declined('no-expansion', `${what} an oscillating function that may vanish has no expansion; ask for a point where it stays away from zero.`);
 }
 
 function reciprocalOf(c: Context, e: Element): Element {
@@ -130,16 +129,23 @@ function turnsAcrossCut(c: Context, front: Multi, rest: Stream): 0 | -1 {
   const lead = monomialOf(c, front);
   if (!lead || isRational(lead.constant) ? !lead || (lead.constant as { num: bigint }).num >= 0n : c.field.isReal(lead.constant) !== 'yes' || c.field.sign(lead.constant) !== -1) return 0;
   if (front instanceof Series && !isRealMulti(c, front)) throw new Declined('undecided', 'The branch of a power or logarithm near its cut could not be decided; choose a side or simplify the argument.');
-  for (let k = 0; k < 40; k += 1) {
-    const term = rest.at(k);
-    if (!term) return 0;
-    if (term.order) return 0;
-    const part = monomialOf(c, term.coefficient);
-    if (!part || c.field.isReal(part.constant) === 'yes') continue;
-    const imaginary = c.field.call('im', [part.constant]);
-    const sign = decideSign(c, imaginary);
-    if (sign === 'complex' || sign === 0) continue;
-    return sign === 1 ? -1 : 0;
+  return signOfImaginary(c, rest, 40) === 1 ? -1 : 0;
+}
+
+/** Sign of the imaginary part of the first term that is not real; 0 where none of the first terms is. */
+function signOfImaginary(c: Context, stream: Stream, most: number): -1 | 0 | 1 {
+  for (let k = 0; k < most; k += 1) {
+    const term = stream.at(k);
+    if (!term || term.order) return 0;
+    const { coefficient } = term;
+    if (coefficient instanceof Series) {
+      const inner = signOfImaginary(c, coefficient.stream, 12);
+      if (inner !== 0) return inner;
+      continue;
+    }
+    if (isRational(coefficient) || c.field.isReal(coefficient) === 'yes') continue;
+    const sign = decideSign(c, imaginaryPart(c, coefficient));
+    if (sign === 1 || sign === -1) return sign;
   }
   return 0;
 }
@@ -228,13 +234,14 @@ function exponentialOfLarge(c: Context, large: Multi): Multi {
   return monomial(c, element, Q.rational(-sign));
 }
 
-/** e^(a + i b) with an unbounded b oscillates. */
+/** e^(a + i b) = e^a e^(i b): an unbounded b oscillates. */
 function exponentialOfComplex(c: Context, large: Multi): Multi {
-  const i = c.field.i;
-  const rotated = scaleBy(c, large, negateElement(c, i));
-  if (!isRealMulti(c, rotated)) throw new Declined('no-expansion', 'An exponential with a complex, unbounded exponent has no expansion here; split it into modulus and phase.');
+  const { i } = c.field;
+  const imaginary = mapConstants(c, large, (e) => imaginaryPart(c, e));
+  const real = subtract(c, large, scaleBy(c, imaginary, i));
   requireOscillation(c);
-  return c.field.exp(c.field.multiply(i, c.field.fromExpression(exactOf(c, rotated))));
+  const phase = c.field.exp(c.field.multiply(i, c.field.fromExpression(exactOf(c, imaginary))));
+  return monomialOf(c, real) === null ? phase : scaleBy(c, exponential(c, real), phase);
 }
 
 export function requireOscillation(c: Context): void {

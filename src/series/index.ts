@@ -2,7 +2,7 @@
 export { alongDerivative, compose, hyperbolic, sineCosine, sumOfSeries } from './analytic.ts';
 export { theta } from './derivation.ts';
 export { compareExponents, signOfExponent, undecidedSign } from './exponent.ts';
-export { divide, exponential, generalPower, isOscillating, isRealMulti, levels, logarithm, pi, power, reciprocal, requireOscillation, withExact } from './exponential.ts';
+export { divide, exponential, generalPower, isRealMulti, levels, logarithm, pi, power, reciprocal, requireOscillation, withExact } from './exponential.ts';
 export { integrate } from './integration.ts';
 export { type InverseFunction, inverse } from './inverse.ts';
 export { compareMonomials, decideSign, eventualSign, type Growth, growth, isZero, leading, type Monomial, monomialOf, nextTerm, nextTermOrOrder } from './leading.ts';
@@ -14,3 +14,5 @@ export { createScale, insertFormal, logarithmOf } from './scale.ts';
 export { compareEventually, type Parts, split } from './split.ts';
 export { dropTerms, finiteStream, mapStream, prepend, takeTerms } from './stream.ts';
 export { integralTail } from './tail.ts';
+export { imaginaryPart, mapConstants, realPart } from './complex.ts';
+export { isOscillating, oscillatingParts } from './oscillation.ts';

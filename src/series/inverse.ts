@@ -82,21 +82,18 @@ function acosh(c: Context, f: Series): Multi {
   const { large, constant } = split(c, f);
   if (large) return logarithm(c, add(c, f, multiply(c, root(c, plus(c, f, Q.ONE)), root(c, plus(c, f, Q.MINUS_ONE)))));
   if (equals(c, constant, Q.ONE)) return scaleBy(c, inverse(c, 'asinh', root(c, scaleBy(c, plus(c, f, Q.MINUS_ONE), Q.HALF))), Q.rational(2));
-  if (isReal(c, constant) && decideSign(c, c.field.subtract(constant, Q.ONE)) === -1) {
-    if (decideSign(c, c.field.add(constant, Q.ONE)) !== 1) throw new Declined('no-expansion', 'acosh has no real value here and this branch is not expanded; use a point above 1.');
-    return scaleBy(c, acos(c, f), c.field.i);
+  if (isReal(c, constant)) {
+    if (equals(c, constant, Q.MINUS_ONE)) return logarithm(c, add(c, f, multiply(c, root(c, plus(c, f, Q.ONE)), root(c, plus(c, f, Q.MINUS_ONE)))));
+    if (decideSign(c, c.field.subtract(c.field.multiply(constant, constant), Q.ONE)) === -1) return scaleBy(c, acos(c, f), c.field.i);
   }
   return alongDerivative(c, f, (at) => c.field.call('acosh', [at]), (g) => reciprocal(c, multiply(c, root(c, plus(c, g, Q.MINUS_ONE)), root(c, plus(c, g, Q.ONE)))));
 }
 
 function atanh(c: Context, f: Series): Multi {
   const { large, constant } = split(c, f);
-  if (large || (isReal(c, constant) && decideSign(c, c.field.subtract(c.field.multiply(constant, constant), Q.ONE)) === 1)) {
-    throw new Declined('no-expansion', 'The inverse hyperbolic tangent has no real value beyond 1 and its branch there is not expanded; use a point between -1 and 1.');
-  }
-  if (equals(c, constant, Q.ONE) || equals(c, constant, Q.MINUS_ONE) || !isReal(c, constant)) {
-    return scaleBy(c, subtract(c, logarithm(c, plus(c, f, Q.ONE)), logarithm(c, subtract(c, Q.ONE, f))), Q.HALF);
-  }
+  const inside = !large && isReal(c, constant) && decideSign(c, c.field.subtract(c.field.multiply(constant, constant), Q.ONE)) === -1;
+  // atanh z = (log(1 + z) - log(1 - z))/2
+  if (!inside) return scaleBy(c, subtract(c, logarithm(c, plus(c, f, Q.ONE)), logarithm(c, subtract(c, Q.ONE, f))), Q.HALF);
   return alongDerivative(c, f, (at) => c.field.call('atanh', [at]), (g) => reciprocal(c, subtract(c, Q.ONE, multiply(c, g, g))));
 }
 

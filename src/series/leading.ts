@@ -8,7 +8,7 @@ import { plainText } from './plain.ts';
 import { vanishes } from './vanish.ts';
 
 /** Vanishing candidates before the search gives up (zero test undecided; decided as non-zero). */
-const CAP_UNDECIDED = 120;
+const CAP_UNDECIDED = 60;
 const CAP = 3000;
 
 /** Null exactly if the series is zero. Throws Declined('undecided') where that cannot be found out, and 'no-expansion' where an O-term hides the leading term. */
@@ -52,7 +52,7 @@ export function nextTermOrOrder(c: Context, s: Series, from: number, mayVanish =
       verdict = restVanishes(c, s, from);
       if (verdict === 'yes') return null;
     }
-    if (seen >= CAP || (verdict !== 'no' && seen >= CAP_UNDECIDED)) {
+    if (seen >= CAP || (verdict !== 'no' && seen >= Math.max(CAP_UNDECIDED, c.patience.value + 20))) {
       throw new Declined('undecided', `The first ${seen} terms of a difference cancel and it could not be decided whether it is zero; simplify the formula by hand.`);
     }
     c.budget.check();

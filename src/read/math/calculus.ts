@@ -206,6 +206,7 @@ export function derivative(p: State): Expression | null {
     const variable = nameOnly(inner);
     const power = exponent(inner.at, belowEnd);
     if (power) inner.at = power.next;
+    if (!power && isMark(p.tokens[inner.at], '^')) fail(p, 'A derivative of symbolic order is not read; write a number for the order.', sign);
     variables.push({ variable, times: power?.count ?? 1 });
     while (peek(inner).kind === 'space') next(inner);
   }
@@ -225,7 +226,8 @@ export function derivative(p: State): Expression | null {
     if (!p.grammar.startsFactor(p)) fail(p, 'There is nothing to differentiate; write the function behind the derivative sign.', p.tokens[belowEnd]);
     operand = isMark(peek(p), '(', '[', '\\{') ? p.grammar.factor(p) : p.grammar.factorRun(p);
   }
-  let value = operand;
+  // What is differentiated is a function of these variables: `\frac{dy}{dt}` is y'(t), not the derivative of a constant.
+  let value: Expression = operand.kind === 'symbol' && !variables.some((v) => v.variable.kind === 'symbol' && v.variable.name === operand.name) ? { kind: 'apply', name: operand.name, args: variables.map((v) => v.variable), derivatives: variables.map(() => 0), span: operand.span } : operand;
   for (const v of [...variables].reverse()) value = node(p, from, { kind: 'derivative', body: value, variable: v.variable, times: v.times });
   return value;
 }

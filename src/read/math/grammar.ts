@@ -185,6 +185,7 @@ const endsFormula = (t: Token): boolean => t.kind === 'space' && (t.text === 'qu
 /** A bracket behind a term that holds a relation sign or words at its own level: `(|x| < 1)`, `(x \to \infty)`. */
 export function isCondition(p: State): boolean {
   const t = peek(p);
+  if (t.kind === 'open') return isWords(p);
   if (!isMark(t, '(', '[')) return false;
   const close = p.match[p.at] ?? -1;
   for (let k = p.at + 1; k < close; k += 1) {
@@ -197,6 +198,18 @@ export function isCondition(p: State): boolean {
     if (relationOf(inner) !== null || inner.kind === 'text' || isCommand(inner, 'in')) return true;
   }
   return false;
+}
+
+/** Braces that hold gaps and words only: `{\;\text{(3rd order)}}`. */
+function isWords(p: State): boolean {
+  const close = p.match[p.at] ?? -1;
+  let words = false;
+  for (let k = p.at + 1; k < close; k += 1) {
+    const t = p.tokens[k] as Token;
+    if (t.kind === 'text') words = true;
+    else if (t.kind !== 'space' && !isMark(t, '(', ')', ',', '.')) return false;
+  }
+  return words;
 }
 
 function isFullStopProduct(p: State): boolean {
@@ -228,7 +241,7 @@ function denominatorAfterSlash(p: State, before: readonly Expression[]): Express
   const from = p.at;
   const divisors: Expression[] = [factorWithSign(p, true)];
   const first = divisors[0] as Expression;
-  const dividend = before.length === 1 ? before[0] : undefined;
+  const dividend = before[before.length - 1];
   const plainNumber = (e: Expression | undefined): boolean => e !== undefined && (e.kind === 'number' || (e.kind === 'negation' && e.operand.kind === 'number') || (e.kind === 'call' && e.function === 'factorial' && e.args[0]?.kind === 'number'));
   const ratio = plainNumber(dividend) && plainNumber(first);
   const firstToken = p.tokens[from] as Token;

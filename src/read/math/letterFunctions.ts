@@ -192,7 +192,7 @@ function numbersOf(p: State, from: number, base: string, index: string, primes: 
 }
 
 /** A subscript as an expression: whole numbers, ratios, a letter, sums such as `\nu+1`, `2n`. */
-function indexExpression(index: string): Expression {
+export function indexExpression(index: string): Expression {
   const bare = index.replace(/^\{|\}$/g, '');
   const terms = bare.match(/[+-]?[^+-]+/g) ?? [bare];
   const read = (text: string): Expression => {

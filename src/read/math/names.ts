@@ -1,11 +1,12 @@
 /** A name in a formula: symbol, constant, unspecified function, or special function written with a letter. */
 import { build, type Expression } from '../../expression/index.ts';
+import { lookupLatex } from '../../functions/index.ts';
 import { isName, nameText } from './facts.ts';
 import { resolve, wordName } from './functionNames.ts';
 import { exponentOf, smallText } from './grammar.ts';
 import { applyKnown, bracketArguments } from './calls.ts';
-import { letterFunction } from './letterFunctions.ts';
-import { fail, isMark, next, node, peek, type State } from './state.ts';
+import { indexExpression, letterFunction } from './letterFunctions.ts';
+import { fail, isMark, next, node, peek, type State, within } from './state.ts';
 import { GREEK } from './unicode.ts';
 import { type Token, Unreadable } from './tokens.ts';
 
@@ -56,8 +57,12 @@ export function name(p: State): Expression {
     if (run) return run;
   }
   if (isOrder(p, base, t)) return order(p, from, base === 'o');
+  // A difference is one quantity: `\Delta t`, `\Delta x^2` is (\Delta x)^2.
+  if (base === '\\Delta' && isName(peek(p)) && !p.options.symbols.has(base)) base = `${base} ${nameText(next(p))}`;
   let index = '';
   let primes = 0;
+  /** An exponent that stands before the subscript: `x^2_1`. */
+  let early: { readonly at: number; readonly end: number } | null = null;
   for (;;) {
     const mark = peek(p);
     if (mark.kind === 'sub' || isMark(mark, '_')) {
@@ -66,6 +71,17 @@ export function name(p: State): Expression {
     } else if (isMark(mark, "'")) {
       next(p);
       primes += 1;
+    } else if (isMark(mark, '^') && early === null && index === '' && subscriptBehind(p) > 0 && !(base === 'H' && derivativeExponent(p) !== null)) {
+      const behind = subscriptBehind(p);
+      early = { at: p.at, end: behind };
+      p.at = behind;
+    } else if (isMark(mark, '^') && base === 'H' && hankelKind(p) !== null) {
+      const kind = hankelKind(p);
+      p.at = (p.match[p.at + 1] ?? p.at) + 1;
+      if (isMark(peek(p), '_')) index = subscript(p);
+      const known = kind === null ? null : lookupLatex(`\\operatorname{H}^{(${kind})}`, { indices: 1, place: 'subscript', arguments: 1 });
+      if (!known || index === '' || !isMark(peek(p), '(', '[')) fail(p, 'A Hankel function needs an order and an argument; write H^{(1)}_{\\nu}(x).', t);
+      return node(p, from, { kind: 'call', function: known.id, args: [indexExpression(index), ...bracketArguments(p)], written: 'H' });
     } else if (isMark(mark, '^') && (isPrimeExponent(p) || (derivativeExponent(p) !== null && looksLikeFunction(p, base, index, primes)))) {
       const count = derivativeExponent(p);
       if (count === null) {
@@ -79,6 +95,16 @@ export function name(p: State): Expression {
     } else break;
   }
   const full = index === '' ? base : `${base}_${index}`;
+  if (early) {
+    const behind = p.at;
+    const symbol = node(p, from, { kind: 'symbol', name: full });
+    const { at, end } = early;
+    p.at = at + 1;
+    const exponent = within(p, end, () => exponentOf(p));
+    p.at = behind;
+    return node(p, from, { kind: 'power', base: symbol, exponent });
+  }
+  if (isMark(peek(p), '^') && isSymbolicOrder(p) && looksLikeFunction(p, base, index, primes)) fail(p, `The derivative of ${full} has a symbolic order; write a number for the order.`, t);
   const constant = index === '' && primes === 0 && !p.options.symbols.has(full) ? constantOf(p, t, base) : null;
   if (constant) return node(p, from, constant);
   if (index !== '' && primes === 0 && /^\\gamma_(?:E|\{EM\}|\{\\mathrm\{E\}\})$/.test(full) && !p.options.symbols.has(full)) return node(p, from, build.constant('eulerGamma'));
@@ -100,6 +126,23 @@ function derivativeExponent(p: State): number | null {
   if (close < 0 || p.match[open] !== close + 1) return null;
   const inner = p.tokens.slice(open + 2, close);
   return inner.length > 0 && inner.length < 4 && inner.every((t) => t.kind === 'digit') ? Number(inner.map((t) => t.text).join('')) : null;
+}
+/** Token of the underscore behind the exponent that starts here, or -1. */
+function subscriptBehind(p: State): number {
+  const close = p.match[p.at + 1] ?? -1;
+  const behind = close > p.at ? close + 1 : p.at + 2;
+  return behind < p.end && isMark(p.tokens[behind], '_') ? behind : -1;
+}
+const hankelKind = (p: State): number | null => {
+  const kind = derivativeExponent(p);
+  return kind === 1 || kind === 2 ? kind : null;
+};
+
+/** `f^{(n)}(x)`: an exponent in brackets that is no number, before an argument. */
+function isSymbolicOrder(p: State): boolean {
+  const open = p.at + 1;
+  const close = p.match[open] ?? -1;
+  return p.tokens[open]?.kind === 'open' && isMark(p.tokens[open + 1], '(') && p.match[open + 1] === close - 1 && isMark(p.tokens[close + 1], '(');
 }
 const isPrimeExponent = (p: State): boolean => {
   const first = p.tokens[p.at + 1];
@@ -149,7 +192,7 @@ function constantOf(p: State, t: Token, base: string): Expression | null {
   if (base === 'e') return t.upright || exact || p.facts.eulerNumber ? build.constant('e') : null;
   if (base === 'i' || base === 'j') {
     if (t.upright && base === 'i') return build.constant('i');
-    return (exact && base === 'i') || (p.facts.imaginary === base && !p.bound.includes(base) && !isMark(peek(p), '(')) ? build.constant('i') : null;
+    return (exact && base === 'i') || (p.facts.imaginary === base && !p.bound.includes(base) && !(isMark(peek(p), '(') && applies(p, base, '', 0))) ? build.constant('i') : null;
   }
   if (base === 'I' && exact) return build.constant('i');
   return null;
@@ -191,6 +234,8 @@ function functionRun(p: State, from: number): Expression | null {
   if (!known) return null;
   const after = p.tokens[k];
   const familiar = FAMILIAR.test(word);
+  // Letters that spell a function and have no argument are never meant as a product.
+  if (familiar && (after === undefined || k >= p.end || after.kind === 'close' || after.kind === 'end' || isMark(after, ')', ']', '+', '-', '=', ',')) && !p.options.symbols.has(word)) fail(p, `The argument of ${word} is missing; write it, for example ${word}(x).`, p.tokens[from]);
   if (!(after && (isMark(after, '(') || (familiar && (after.spaced || isMark(after, '^', '[') || after.kind === 'open' || after.kind === 'super'))))) return null;
   p.at = k;
   return applyKnown(p, from, known);

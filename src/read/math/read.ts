@@ -3,9 +3,10 @@ import type { Expression } from '../../expression/index.ts';
 import { failure, type Outcome, success } from '../../outcome.ts';
 import { atom, infix, startsFactor, texArgument } from './atoms.ts';
 import { gatherFacts, type NameFacts } from './facts.ts';
-import { factor, factorRun, relation, sum, term } from './grammar.ts';
+import { factor, factorRun, isCondition, relation, sum, term } from './grammar.ts';
 import { lex } from './lexer.ts';
 import { type MacroTable, NO_MACROS } from './macros.ts';
+import { withIndexDerivatives } from './indexDerivatives.ts';
 import { fail, type Grammar, isCommand, isMark, named, next, peek, type State } from './state.ts';
 import { MAX_DEPTH, type Token, TOO_DEEP, Unreadable } from './tokens.ts';
 
@@ -148,7 +149,7 @@ export function readFormula(text: string, notation: 'latex' | 'plain', options: 
       }
     }
     if (!main) return failure('unreadable', 'Nothing to read here yet; select or write a formula.', { start: options.start ?? 0, end: options.end ?? text.length });
-    return success({ expression: main, conditions, remarks, ...(unknown === undefined ? {} : { unknown }) });
+    return success({ expression: withIndexDerivatives(main), conditions, remarks, ...(unknown === undefined ? {} : { unknown }) });
   } catch (error) {
     if (error instanceof Unreadable) return { ok: false, error: error.failure };
     throw error;
@@ -161,7 +162,7 @@ function piece(p: State): Expression {
   const value = (p.facts.infix ? infix(p, start - 1, p.end) : null) ?? relation(p);
   if (p.at === start) fail(p, `${named(peek(p))} is not understood here.`);
   const t = peek(p);
-  if (t.kind !== 'end' && !isSeparator(t) && !isMark(t, '(', '[')) {
+  if (t.kind !== 'end' && !isSeparator(t) && !isCondition(p)) {
     fail(p, `${named(t).replace(/^./, (c) => c.toUpperCase())} is not understood here; remove it or add an operator before it.`);
   }
   return value;

@@ -3,6 +3,8 @@ import { build, type Expression } from '../../expression/index.ts';
 import type { FunctionDescription } from '../description.ts';
 import { airyEquation, airyLocal, airyValue } from './airy.ts';
 import { besselILocal, besselJLocal, besselKLocal, besselYLocal, cylinderDerivative, cylinderEquation, cylinderValue } from './cylinder.ts';
+import { enclosed } from '../enclosure/wrap.ts';
+import { besselAlgorithms } from './enclosure.ts';
 import { kelvinDerivative, kelvinEquation, kelvinLocal, kelvinValue } from './kelvin.ts';
 import { besselNames as n } from './names.ts';
 import { struveDerivative, struveEquation, struveLocal } from './struve.ts';
@@ -14,7 +16,7 @@ const spherical =
   ([order = number(0), x = number(0)]: readonly Expression[]): Expression =>
     product(squareRoot(quotient(constant('pi'), product(number(2), x))), call(id, sum(order, half), x));
 
-export const besselFunctions: readonly FunctionDescription[] = [
+const descriptions: readonly FunctionDescription[] = [
   { id: 'besselJ', title: 'Bessel function of the first kind', arity: 2, names: n.besselJ, local: besselJLocal, value: cylinderValue('J'), derivative: cylinderDerivative('besselJ', 1), equation: cylinderEquation('besselJ', 1), source: 'DLMF 10.2.2' },
   { id: 'besselY', title: 'Bessel function of the second kind', arity: 2, names: n.besselY, local: besselYLocal, value: cylinderValue('Y'), derivative: cylinderDerivative('besselY', 1), equation: cylinderEquation('besselY', 1), domain: 'x > 0', source: 'DLMF 10.2.3' },
   { id: 'besselI', title: 'modified Bessel function of the first kind', arity: 2, names: n.besselI, local: besselILocal, value: cylinderValue('I'), derivative: cylinderDerivative('besselI', 1), equation: cylinderEquation('besselI', -1), source: 'DLMF 10.25.2' },
@@ -36,3 +38,5 @@ export const besselFunctions: readonly FunctionDescription[] = [
   { id: 'kelvinKer', title: 'Kelvin function ker', arity: 2, names: n.kelvinKer, local: kelvinLocal('Ker'), value: kelvinValue('Ker'), derivative: kelvinDerivative('Ker'), equation: kelvinEquation('Ker'), domain: 'x > 0', source: 'DLMF 10.61.2' },
   { id: 'kelvinKei', title: 'Kelvin function kei', arity: 2, names: n.kelvinKei, local: kelvinLocal('Kei'), value: kelvinValue('Kei'), derivative: kelvinDerivative('Kei'), equation: kelvinEquation('Kei'), domain: 'x > 0', source: 'DLMF 10.61.2' },
 ];
+
+export const besselFunctions = enclosed(descriptions, besselAlgorithms);

@@ -8,6 +8,7 @@ import { imaginaryKernel, kernelElement, minus, rationalOf, type Context } from 
 import { deepZero } from './deepZero.ts';
 import { callFunction } from './functions.ts';
 import { fromExpression } from './fromExpression.ts';
+import { refutedByInverse } from './inverseFunctions.ts';
 import { createKernelTable, type Kernel } from './kernel.ts';
 import { divideElements, exponential, generalPower, logarithm } from './powers.ts';
 import { polynomialKey, type Polynomial } from './polynomial.ts';
@@ -29,7 +30,7 @@ export function createField(assumptions: readonly Assumption[], budget: Budget, 
   const table = createKernelTable(() => budget.check());
   const facts = createAssumptionStore(table);
   const needed = new Set<string>();
-  const zero = createZeroTest(table, describe, facts, (k) => signs.ofKernel(k), (a) => deepZero(ctx, a));
+  const zero = createZeroTest(table, describe, facts, (k) => signs.ofKernel(k), (a) => deepZero(ctx, a), (a) => refutedByInverse(ctx, a));
   const signs = createSignRules(table, facts, (k) => signOfOpaque(k), (f) => signOfSum(f));
   const sums = new Map<string, SignSet>();
   const ctx: Context = {

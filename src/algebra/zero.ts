@@ -21,7 +21,7 @@ const PRECISIONS = [64, 128, 320, 800, 2000] as const;
 /** Numerators and denominators of the values that parameters take, spread so that no small relation holds among them. */
 const SAMPLE_COUNT = 3;
 
-export function createZeroTest(table: KernelTable, describe: (id: string) => FunctionDescription | null | undefined, facts: AssumptionStore, signOf: (k: Kernel) => SignSet, deepZero: (a: Element) => boolean): ZeroTest {
+export function createZeroTest(table: KernelTable, describe: (id: string) => FunctionDescription | null | undefined, facts: AssumptionStore, signOf: (k: Kernel) => SignSet, deepZero: (a: Element) => boolean, refuted: (a: Element) => boolean): ZeroTest {
   const differs = (a: Element): boolean => {
     const [x, y] = [test.enclose(a, 64, 0), test.enclose(a, 64, 2)];
     return x !== null && y !== null && !complex.overlaps(x, y);
@@ -69,7 +69,7 @@ export function createZeroTest(table: KernelTable, describe: (id: string) => Fun
       // Only the sum can vanish.
       return test.isZero(elementFromPolynomial(table, a.numerator));
     }
-    if (variesByOneKernel(table, facts, a)) return 'no';
+    if (variesByOneKernel(table, facts, a) || refuted(a)) return 'no';
     const parameters = [...allKernels(table, a)].some((k) => (table.kernels[k] as Kernel).shape.kind === 'parameter');
     const samples = parameters ? SAMPLE_COUNT : 1;
     let looksZero = false;

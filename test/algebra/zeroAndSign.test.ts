@@ -45,6 +45,10 @@ describe('zero', () => {
     b.difference(a, c),
     b.difference(call('log', n(3)), b.quotient(b.product(n(8), call('log', n(4))), n(10))),
     b.sum(b.squareRoot(n(2)), b.squareRoot(n(3)), b.negation(b.squareRoot(n(10)))),
+    // 1 + W_1(1), since W = -1 only at -1/e (DLMF 4.13); a function of a parameter without an enclosure.
+    b.sum(call('lambertW', n(1), n(1)), n(1)),
+    b.difference(call('gamma', a), b.power(a, 2)),
+    call('besselJ', n(0), a),
   ])('not %#', (e) => expect(ask(e).zero).toBe('no'));
 
   it('says undecided where neither form nor ball decides', () => {

@@ -151,8 +151,12 @@ function furtherTerms(n: number, sizes: readonly number[], missing: number): num
   const [d1, d2] = [first - second, second - now];
   const [l1, l2] = [Math.log((n - step) / (n - 2 * step)), Math.log(n / (n - step))];
   if (!(d2 > 0)) return null;
-  const c = (d1 - d2) / (l1 - l2);
-  const b = (d2 - c * l2) / step;
+  const slope = (d1 - d2) / (l1 - l2);
+  const rate = (d2 - slope * l2) / step;
+  // A rate that has done nothing yet is noise of the fit: the error then falls like a power of n.
+  const algebraic = rate * n < 1;
+  const b = algebraic ? 0 : rate;
+  const c = algebraic ? d2 / l2 : slope;
   let low = 0;
   let high = 1e7;
   const fall = (m: number): number => b * m + c * Math.log((n + m) / n);

@@ -1,10 +1,10 @@
 /** Elementary functions of field elements: special values, parity, shifts by quarter turns, compositions with inverses. */
 import { Q, type Rational } from '../expression/index.ts';
-import { callKernel, constantKernel, imaginaryKernel, isZeroRational, kernelElement, rationalOf, type Context } from './context.ts';
+import { callKernel, constantKernel, imaginaryKernel, isZeroRational, kernelElement, rationalOf, undecided, type Context } from './context.ts';
 import type { Kernel } from './kernel.ts';
 import { absolute, divideElements, exponential, logarithm, rationalPower } from './powers.ts';
 import { addElements, isQuotient, multiplyElements, negateElement, scaleElement } from './quotient.ts';
-import { isRealSet, NEGATIVE, NIL } from './signs.ts';
+import { isRealSet, NEGATIVE, NIL, POSITIVE } from './signs.ts';
 import { additiveTerms, byImaginaryUnit, multipleOfKernel, rationalMultiple, singleKernel, timesI } from './split.ts';
 import { cosineOfPi, sineOfPi } from './unitCircle.ts';
 import type { Element } from './types.ts';
@@ -197,7 +197,8 @@ function arcTangent(ctx: Context, a: Element): Element {
   if (isZeroRational(a)) return Q.ZERO;
   const r = rationalOf(a);
   if (r && Q.isOne(r)) return scaleElement(pi(ctx), Q.rational(1, 4));
-  if (isNumericAlgebraic(ctx, a)) {
+  if (isZeroRational(plus(ctx, Q.ONE, squared(ctx, a)))) throw undecided('The inverse tangent has no value at i and -i; choose another point or parameter.');
+  if (isNumericAlgebraic(ctx, a) && isRealSet(ctx.signs.of(a))) {
     const tangent = (q: Rational): Element => divideElements(ctx, sineOfPi(ctx, q), cosineOfPi(ctx, q));
     const angle = angleWith(ctx, a, tangent);
     if (angle) return scaleElement(pi(ctx), angle);
@@ -234,7 +235,7 @@ function arcHyperbolicTangent(ctx: Context, a: Element): Element {
 function signum(ctx: Context, a: Element): Element {
   const s = ctx.signs.of(a);
   if (s === NIL) return Q.ZERO;
-  if (s === 4) return Q.ONE;
+  if (s === POSITIVE) return Q.ONE;
   if (s === NEGATIVE) return Q.MINUS_ONE;
   if (isRealSet(s)) {
     const size = absolute(ctx, a);

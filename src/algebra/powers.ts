@@ -9,7 +9,7 @@ import { monomialOf, multiplyMonomials, UNIT, type Monomial } from './monomial.t
 import { isOnePolynomial, kernelsIn, scalePolynomial, type Polynomial } from './polynomial.ts';
 import { addElements, elementFromMonomial, elementFromPolynomial, elementKey, invertElement, isQuotient, multiplyElements, negateElement, partsOf, scaleElement, wholePower } from './quotient.ts';
 import { positiveRationalPower, radicandPower } from './radicals.ts';
-import { isNonNegative, isRealSet, NEGATIVE, NIL } from './signs.ts';
+import { isNonNegative, isRealSet, NEGATIVE, NIL, POSITIVE } from './signs.ts';
 import { additiveTerms, asElement, byImaginaryUnit, rationalMultiple, singleKernel } from './split.ts';
 import { squareFreeFactors } from './squareFree.ts';
 import { cosineOfPi, sineOfPi } from './unitCircle.ts';
@@ -356,7 +356,7 @@ export function logarithm(ctx: Context, a: Element): Element {
     // log exp(i t) = i t for -pi < t <= pi only; unknown otherwise.
     const im = byImaginaryUnit(ctx, multiple(kernel.shape.unit, single.exponent));
     const pi = kernelElement(ctx, constantKernel(ctx, 'pi'));
-    if (isZeroRational(im.re) && isNonNegative(ctx.signs.of(minus(ctx, pi, im.im))) && ctx.signs.of(plus(ctx, pi, im.im)) === 4) return plus(ctx, result, multiple(kernel.shape.unit, single.exponent));
+    if (isZeroRational(im.re) && isNonNegative(ctx.signs.of(minus(ctx, pi, im.im))) && ctx.signs.of(plus(ctx, pi, im.im)) === POSITIVE) return plus(ctx, result, multiple(kernel.shape.unit, single.exponent));
   }
   if (single && kernel && !negative && kernel.shape.kind !== 'exp' && kernel.shape.kind !== 'power' && compareExponents(single.exponent, -1) > 0 && compareExponents(single.exponent, 1) <= 0) {
     return plus(ctx, result, multiple(kernelElement(ctx, logKernel(ctx, kernel.shape.kind === 'radicand' ? kernel.shape.base : kernelElement(ctx, kernel))), single.exponent));
@@ -390,7 +390,7 @@ export function generalPower(ctx: Context, a: Element, b: Element): Element {
   const r = rationalOf(b);
   if (r) return rationalPower(ctx, a, r);
   if (isZeroRational(a)) {
-    if (ctx.signs.of(b) === 4) return Q.ZERO;
+    if (ctx.signs.of(b) === POSITIVE) return Q.ZERO;
     throw undecided('A power of zero with this exponent has no settled value; state that the exponent is positive.');
   }
   return exponential(ctx, times(ctx, b, logarithm(ctx, a)));

@@ -100,7 +100,7 @@ describe('sign', () => {
 });
 
 describe('declined', () => {
-  const f = createField([], budget(2000));
+  const f = createField([], budget(600_000));
   const failure = (body: () => unknown) => {
     const o = attempt(body);
     return o.ok ? null : o.error;
@@ -110,6 +110,8 @@ describe('declined', () => {
     const hidden = f.fromExpression(b.difference(call('sin', b.product(n(2), a)), b.product(n(2), call('sin', a), call('cos', a))));
     expect(failure(() => f.divide(f.rational(1), hidden))?.code).toBe('undecided');
     expect(failure(() => f.log(f.rational(0)))?.code).toBe('undecided');
+    expect(failure(() => f.call('atan', [f.i]))?.code).toBe('undecided');
+    expect(failure(() => f.call('atanh', [f.rational(1)]))?.code).toBe('undecided');
   });
   it('infinity, order terms and deep nesting', () => {
     expect(failure(() => f.fromExpression(b.constant('infinity')))?.code).toBe('bad-request');
@@ -122,6 +124,6 @@ describe('declined', () => {
     const start = performance.now();
     expect(failure(() => f.power(f.fromExpression(b.sum(a, c, n(1))), f.rational(10n ** 9n)))?.code).toBe('undecided');
     expect(failure(() => f.power(f.rational(2), f.rational(10n ** 30n)))?.code).toBe('undecided');
-    expect(performance.now() - start).toBeLessThan(1000);
+    expect(performance.now() - start).toBeLessThan(3000);
   });
 });

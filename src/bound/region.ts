@@ -61,6 +61,9 @@ export function segmentsOf(expansion: Expansion, interval: ClosedInterval, assum
   if (point === 'inf' || point === '-inf') return cutEnds(low, high, expansion, point === 'inf' ? 'upper' : 'lower', assumptions);
   const fromPoint = low ? compareReal(low, point, assumptions) : -1;
   const toPoint = high ? compareReal(high, point, assumptions) : 1;
+  if (!expansion.left && ((expansion.side === 'right' && fromPoint < 0) || (expansion.side === 'left' && toPoint > 0))) {
+    throw new Declined('bad-request', `The expansion serves the ${expansion.side} side of the point only; choose an interval on that side.`);
+  }
   const segments: Segment[] = [];
   if (fromPoint < 0) segments.push(...leftOf(low, toPoint >= 0 ? point : high, left, toPoint >= 0));
   if (toPoint > 0) segments.push(...rightOf(fromPoint <= 0 ? point : low, high, expansion, fromPoint <= 0));

@@ -385,6 +385,19 @@ function logArithmetic<T>(m: ModelArithmetic<T>, r: RealArithmetic<T> | null): L
     const floor = r.floor(r.midpoint(lead));
     return floor !== null && a.isZero(a.subtract(lead, a.fromInteger(floor))) ? Number(floor) : 0;
   };
+  /** asinh, acosh and log1p of an argument that grows without bound: by the logarithm. */
+  const logarithmic = (name: ElementaryName, f: Model<T>): LogModel<T> | null => {
+    if (r === null || !r.isNonNegative(m.domain)) return null;
+    if (name === 'log1p') return elementary('log', [m.add(m.constant(a.one), f)]);
+    const negative = r.isNegative(f.range);
+    if (!negative && !r.isPositive(f.range)) return null;
+    if (name !== 'asinh' && (name !== 'acosh' || negative)) return null;
+    const u = negative ? m.negate(f) : f;
+    const square = m.multiply(u, u);
+    const root = m.powerRational(m.add(square, m.constant(a.fromInteger(name === 'asinh' ? 1 : -1))), { num: 1n, den: 2n });
+    const value = root && elementary('log', [m.add(u, root)]);
+    return value && negative ? value.map((x) => m.negate(x)) : value;
+  };
   const elementary = (name: ElementaryName, f: LogModel<T>): LogModel<T> | null => {
     if (f.length === 1) {
       const only = at(f, 0);
@@ -394,8 +407,9 @@ function logArithmetic<T>(m: ModelArithmetic<T>, r: RealArithmetic<T> | null): L
         const rest = m.elementary('log', shift(only, -only.valuation));
         return rest && [rest, m.constant(a.fromInteger(only.valuation))];
       }
-      const value = m.elementary(name, only);
-      return value && [value];
+      const value = m.elementary(name, only) ?? m.elementaryAtInfinity(name, only);
+      if (value !== null) return [value];
+      return only.valuation < 0 ? logarithmic(name, only) : null;
     }
     const whole = name === 'exp' ? wholePower(f) : 0;
     if (whole !== 0) {

@@ -40,6 +40,8 @@ export interface ModelArithmetic<T> {
   /** f^y with constant exponent y; v must be 0 unless y is an exact integer in disguise. */
   power(f: Model<T>, y: T): Model<T> | null;
   elementary(name: ElementaryName, f: Model<T>): Model<T> | null;
+  /** atan, tanh of an argument that grows without bound with one sign (v < 0, real, s in [0, 1]); null for all others. */
+  elementaryAtInfinity(name: ElementaryName, f: Model<T>): Model<T> | null;
   /** From f' along the model: f(u) with value f(u(0)) given and `slope` the model of f'(P), P the polynomial part of u; slopeRange encloses f' over the range of u. */
   integrate(u: Model<T>, start: T, slope: Model<T>, slopeRange: T | null): Model<T> | null;
   /** The same function with v = 0 (null where v < 0). */
@@ -501,6 +503,23 @@ export function modelArithmetic<T>(a: Arithmetic<T>, domain: T, length: number, 
         return byDerivative(f, 'acosh', (u) => powerRational(subtract(squareOf(u), constant(one)), rootPower));
     }
   };
+  const elementaryAtInfinity = (name: ElementaryName, f: M): M | null => {
+    if (real === null || !oneSided || f.valuation >= 0 || (name !== 'atan' && name !== 'tanh')) return null;
+    const negative = real.isNegative(f.range);
+    if (!negative && !real.isPositive(f.range)) return null;
+    const u = negative ? negate(f) : f;
+    if (name === 'atan') {
+      const inverse = divide(constant(one), u);
+      const rest = inverse && elementary('atan', inverse);
+      const value = rest && subtract(constant(a.divideInteger(a.constant('pi'), 2)), rest);
+      return value && negative ? negate(value) : value;
+    }
+    // tanh u = 1 - 2E/(1 + E), E = e^(-2u).
+    const e = flat(scale(u, a.fromInteger(-2)));
+    const rest = e && divide(scale(e, a.fromInteger(2)), add(constant(one), e));
+    const value = rest && subtract(constant(one), rest);
+    return value && negative ? negate(value) : value;
+  };
   const quotientWithRange = (numerator: M, denominator: M, f: M, name: 'tan' | 'tanh'): M | null => {
     const value = divide(numerator, denominator);
     const u = value === null ? null : regular(f);
@@ -508,5 +527,5 @@ export function modelArithmetic<T>(a: Arithmetic<T>, domain: T, length: number, 
     return value === null || natural === null ? value : withRange(value, natural);
   };
 
-  return { a, domain, length, constant, polynomial, add, subtract, negate, scale, multiply, divide, powerInteger, powerRational, power, elementary, integrate, regular, polynomialPart, rangeOf, withRange };
+  return { a, domain, length, constant, polynomial, add, subtract, negate, scale, multiply, divide, powerInteger, powerRational, power, elementary, elementaryAtInfinity, integrate, regular, polynomialPart, rangeOf, withRange };
 }

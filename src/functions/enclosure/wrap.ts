@@ -27,21 +27,26 @@ function adaptive<T>(attempt: (bits: number) => T | null, accuracy: (value: T) =
   let bits = precision + 16;
   let best: T | null = null;
   let bestAccuracy = -Infinity;
-  for (let round = 0; round < 9 && bits <= MOST_BITS; round++) {
+  for (let round = 0; round < 12 && bits <= Math.min(MOST_BITS, 40 * (precision + 64)); round++) {
     const value = attempt(bits);
-    if (value !== null) {
-      const got = accuracy(value);
-      if (got >= precision || got === Infinity) return value;
-      if (best !== null && got <= bestAccuracy + 2) return best;
-      best = value;
-      bestAccuracy = got;
-      if (limit < precision && got > limit - 40 && round >= 1) return best;
-      bits += Math.max(16, Math.min(precision - got + 16, 20 * bits));
-    } else {
+    if (value === null) {
       if (limit < Infinity && round >= 1) return best;
       bits = 2 * bits;
+      continue;
     }
-    if (limit !== Infinity && round >= 3) return best;
+    const got = accuracy(value);
+    if (got >= precision || got === Infinity) return value;
+    if (limit === Infinity && got < 8) {
+      // Nothing but rounding is left: the digits that cancel are not even known yet.
+      if (best === null) best = value;
+      bits = 2 * bits;
+      continue;
+    }
+    if (best !== null && got <= bestAccuracy + 2) return best;
+    best = value;
+    bestAccuracy = got;
+    if (limit !== Infinity && (round >= 3 || (got > limit - 40 && round >= 1))) return best;
+    bits += Math.max(16, precision - got + 16);
   }
   return best;
 }

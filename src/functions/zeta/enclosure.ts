@@ -199,11 +199,19 @@ function stieltjes(kit: Kit<Ball>, n: number): Ball | null {
 function logBarnesG(kit: Kit<Ball>, x: Ball): Ball | null {
   const { a } = kit;
   if (!real.isPositive(x)) return null;
+  const n = exactInteger(x, 400);
+  if (n !== null) return logSuperfactorial(kit, n);
   const logarithm = logGamma(kit, x);
   const own = zetaDerivative(kit, 1, a.fromInteger(-1), x);
   const one = zetaDerivative(kit, 1, a.fromInteger(-1), a.one);
   if (logarithm === null || own === null || one === null) return null;
   return a.add(a.subtract(a.multiply(a.subtract(x, a.one), logarithm), own), one);
+}
+/** log G(n) of the product of the factorials below n - 1. */
+function logSuperfactorial(kit: Kit<Ball>, n: number): Ball | null {
+  let product = 1n;
+  for (let j = 2; j < n - 1; j++) product *= factorial(j);
+  return kit.a.log(kit.a.fromInteger(product));
 }
 function barnesG(kit: Kit<Ball>, x: Ball): Ball | null {
   const { a } = kit;

@@ -3,6 +3,7 @@ import { build, Q, type Expression, type OrderNode, type Relation, type Span } f
 import type { Expansion } from '../expand/index.ts';
 import { termTree } from '../write/index.ts';
 import type { Setting } from './context.ts';
+import { replaceNode } from './decimals.ts';
 import { edits, type Edit, type TrueTerm } from './edits.ts';
 import { sample } from './enclose.ts';
 import { judge, type Failed } from './judge.ts';
@@ -31,6 +32,23 @@ export interface Accused {
   readonly text: string;
 }
 
+/** One change of one number, sign or exponent makes the whole claim true: it is plainly meant as this expansion. */
+export function isOneChangeAway(accused: Accused): boolean {
+  const { failure } = accused;
+  if (!failure.difference) return false;
+  const expansion = truthAround(accused, failure.difference.size);
+  const edit = firstRepair(accused, failure.difference, expansion);
+  return edit?.whole === true || isOneTermAway(accused, failure.difference.size, expansion);
+}
+
+/** The claim is true with the one printed term of this order replaced. */
+function isOneTermAway({ truncated, setting, truth, relation }: Accused, size: Size, expansion: Expansion | null): boolean {
+  const printed = truncated.terms.find((t) => sameSize(t, size, setting));
+  const right = expansion?.terms.find((t) => !t.scale && t.power.kind === 'number' && compareSizes({ power: t.power.value, log: t.log }, size) === 0);
+  if (!printed || !expansion || !right || printed.node !== printed.value) return false;
+  return judge(truth, replaceNode(truncated.side, printed.node, termTree(expansion, right)), relation, setting).kind === 'holds';
+}
+
 export function blame(accused: Accused): Blame {
   const { truncated, failure } = accused;
   const whole = truncated.side.span ?? { start: 0, end: accused.text.length };
@@ -56,17 +74,17 @@ function trueTerms(expansion: Expansion | null): readonly TrueTerm[] {
   return (expansion?.terms ?? []).flatMap((t) => (t.scale || t.power.kind !== 'number' ? [] : [{ size: { power: t.power.value, log: t.log }, value: sample(t.coefficient) }]));
 }
 
-function firstRepair(accused: Accused, difference: { readonly size: Size; readonly coefficient: Expression }, expansion: Expansion | null): Edit | null {
+function firstRepair(accused: Accused, difference: { readonly size: Size; readonly coefficient: Expression }, expansion: Expansion | null): (Edit & { readonly whole: boolean }) | null {
   const { truncated, setting, text, truth, relation } = accused;
   let partial: Edit | null = null;
   for (const edit of edits(truncated, difference, trueTerms(expansion), setting, text).slice(0, MOST_TRIES)) {
     const again = judge(truth, edit.side, relation, setting);
-    if (again.kind === 'holds' || again.kind === 'identity') return edit;
+    if (again.kind === 'holds' || again.kind === 'identity') return { ...edit, whole: true };
     // A claim with two errors: the change that puts this one right.
     const further = again.kind === 'fails' && again.failure.difference !== null && compareSizes(again.failure.difference.size, difference.size) > 0 && edit.kind !== 'exponent';
     if (further) partial ??= edit;
   }
-  return partial;
+  return partial && { ...partial, whole: false };
 }
 
 function repaired(accused: Accused, edit: Edit): Blame {

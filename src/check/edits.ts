@@ -1,5 +1,5 @@
 /** Single changes of a printed side that an author would make: one number, one sign, one exponent. Each is tried and only what proves right is offered. */
-import { build, dependsOn, mapChildren, Q, type Expression, type NumberNode, type Span } from '../expression/index.ts';
+import { build, dependsOn, mapChildren, Q, walk, type Expression, type NumberNode, type Span } from '../expression/index.ts';
 import { sample } from './enclose.ts';
 import type { Setting } from './context.ts';
 import { replaceNode } from './decimals.ts';
@@ -86,13 +86,14 @@ function numberEdits(here: readonly PrintedTerm[], truncated: Truncated, differe
   const out: Edit[] = [];
   const delta = sample(difference.coefficient);
   if (delta === null) return out;
+  const usesFactorials = [...walk(truncated.side)].some((n) => n.kind === 'call' && n.function === 'factorial');
   for (const term of here) {
     const found = leading(setting, term.value);
     if (found.kind !== 'monomial') continue;
     const printed = sample(found.coefficient);
     if (printed === null) continue;
     const target = printed + delta;
-    out.push(...factorialEdits(term, truncated, target, found.size, setting));
+    out.push(...factorialEdits(term, truncated, target, found.size, usesFactorials ? 0.5 : 1.2, setting));
     for (const literal of literalsOf(term.value, setting)) {
       if (!literal.span || !Q.isInteger(literal.value)) continue;
       const valueWith = (m: bigint): number | null => {
@@ -110,12 +111,12 @@ function numberEdits(here: readonly PrintedTerm[], truncated: Truncated, differe
 }
 
 /** A factorial lost or invented: 3! for 3, 3 for 3!. */
-function factorialEdits(term: PrintedTerm, truncated: Truncated, target: number, size: Size, setting: Setting): readonly Edit[] {
+function factorialEdits(term: PrintedTerm, truncated: Truncated, target: number, size: Size, cost: number, setting: Setting): readonly Edit[] {
   const out: Edit[] = [];
   const offer = (node: Expression, replacement: Expression, text: string, place: Span): void => {
     const changed = leading(setting, replaceNode(term.value, node, replacement));
     const value = changed.kind === 'monomial' && compareSizes(changed.size, size) === 0 ? sample(changed.coefficient) : null;
-    if (value !== null && Math.abs(value - target) <= 1e-9 * Math.abs(target)) out.push({ side: replaceNode(truncated.side, node, replacement), place, text, kind: 'number', cost: 0.5 });
+    if (value !== null && Math.abs(value - target) <= 1e-9 * Math.abs(target)) out.push({ side: replaceNode(truncated.side, node, replacement), place, text, kind: 'number', cost });
   };
   const visit = (node: Expression): void => {
     if (node.kind === 'call' && node.function === 'factorial' && node.args[0]?.kind === 'number' && node.span) {

@@ -2,7 +2,7 @@
 import { freeSymbols, Q, type Expression, type Span } from '../expression/index.ts';
 import type { Finding } from '../protocol.ts';
 import { toPlain } from '../write/index.ts';
-import { blame } from './blame.ts';
+import { type Accused, blame, isOneChangeAway } from './blame.ts';
 import { type Claim, isTranscendental } from './claims.ts';
 import type { FoundFormula } from './formulas.ts';
 import { explicitPart, type General, generalIn, judgeGeneral } from './generalClaims.ts';
@@ -96,11 +96,12 @@ function isHeldAgainst(claim: Claim, f: Expression, best: Tried, several: boolea
   const certain = best.choice.certain;
   if (claim.relation === 'to' || claim.relation === 'define') return false;
   if (claim.relation === 'tilde' && (count === 1 || place.formula.inline) && truncated.mark === 'none') return !place.formula.inline && certain && failure.matched === 0 && count === 1;
+  const oneChange = (): boolean => isOneChangeAway(accusedOf(claim, f, best.choice.setting, { failure, truncated }, place));
   const marked = truncated.mark !== 'none';
   if (marked) return certain || failure.matched > 0 || !several || (count > 1 && isTranscendental(f, best.choice.setting.variable));
   if (!isTranscendental(f, best.choice.setting.variable)) return false;
-  if (claim.relation === '=') return count >= 2 && failure.matched >= 1;
-  return failure.matched >= 1 || (certain && count >= 1 && failure.difference !== null);
+  if (claim.relation === '=') return (count >= 2 && failure.matched >= 1) || (count >= 3 && oneChange());
+  return failure.matched >= 1 || (certain && failure.difference !== null) || (count >= 2 && oneChange());
 }
 
 function meant(claim: Claim, f: Expression, setting: Setting): boolean {
@@ -140,9 +141,13 @@ export const unresolved = (claim: Claim, place: Place): Finding =>
   undecided(claim, place, `The left side ${claim.name ? toPlain(claim.name) : ''} is only a name, and its definition does not stand in this document.`);
 
 function failing(claim: Claim, f: Expression, setting: Setting, judgement: Extract<Judgement, { kind: 'fails' }>, place: Place): Finding {
-  const notation = notationOf(place.text.slice(place.formula.span.start, place.formula.span.end), place.formula.notation);
-  const found = blame({ truth: f, relation: claim.relation, truncated: judgement.truncated, failure: judgement.failure, setting, notation, text: place.text });
+  const found = blame(accusedOf(claim, f, setting, judgement, place));
   return { start: found.place.start, end: found.place.end, claim: claim.span, verdict: 'fails', severity: 'error', reason: found.message, found: found.found, fix: found.fix, ...labelOf(place) };
+}
+
+function accusedOf(claim: Claim, f: Expression, setting: Setting, { failure, truncated }: Pick<Extract<Judgement, { kind: 'fails' }>, 'failure' | 'truncated'>, place: Place): Accused {
+  const notation = notationOf(place.text.slice(place.formula.span.start, place.formula.span.end), place.formula.notation);
+  return { truth: f, relation: claim.relation, truncated, failure, setting, notation, text: place.text };
 }
 
 const labelOf = (place: Place): { readonly label?: string } => (place.formula.label === null ? {} : { label: place.formula.label });

@@ -79,7 +79,7 @@ function formulaInLine(text: string, start: number, end: number): Place | null {
   const relation = RELATION.exec(line);
   if (!relation || line.length > 2000) return null;
   const notation = line.includes('\\') ? 'latex' : 'plain';
-  const lead = /^[\s*/!#%;>-]*/.exec(line)?.[0].length ?? 0;
+  const lead = /^[\s*/!#%;>]*(?:-\s+)?/.exec(line)?.[0].length ?? 0;
   const starts = [lead, ...[...line.slice(lead, relation.index).matchAll(/[:;,]\s+|\s+|(?<=\w)\(/g)].map((m) => lead + m.index + m[0].length)];
   for (const at of new Set(starts)) {
     if (at >= relation.index) continue;

@@ -77,20 +77,24 @@ export function parseFragment(text: string, start: number, end: number, language
 function parseWrapped(text: string, start: number, end: number, wrap: Wrap, language: CodeLanguage, grammar: string, store: GrammarStore): Program | null {
   return store.withTree(grammar, wrap.before + text.slice(start, end) + wrap.after, (tree) => {
     if (tree.rootNode.hasError) return null;
-    const inside = nodeAt(capture(tree, wrap.before.length - start), start - 1);
+    const inside = nodeAt(capture(tree, wrap.before.length - start), start - 1, end + wrap.after.search(/[)}]/) + 1);
     if (!inside) return null;
     const program = lowerTree(inside, text);
     const { root } = program;
-    return repairCasts({ ...program, root: root.kind === 'group' ? root.inner : root }, text, language);
+    // The brackets of the wrap are not the document's.
+    const own = root.kind === 'group' ? root.inner : { ...root, start: Math.max(root.start, start), end: Math.min(root.end, end) };
+    return repairCasts({ comments: program.comments.filter((c) => c.start >= start && c.end <= end), root: own }, text, language);
   });
 }
 
-/** The outermost node that starts at the bracket just before the fragment. */
-function nodeAt(root: Raw, position: number): Raw | null {
+const BRACKETS: ReadonlySet<string> = new Set(['parenthesized_expression', 'tuple', 'tuple_expression', 'block', 'compound_statement', 'statement_block', 'class_body', 'declaration_list']);
+
+/** The bracketed node that the wrap made, and not one that closes the wrap's bracket early. */
+function nodeAt(root: Raw, start: number, end: number): Raw | null {
   let here: Raw | undefined = root;
   while (here) {
-    if (here.start === position && here.named && here.children.length > 0) return here;
-    here = here.children.find((c) => c.start <= position && c.end > position);
+    if (here.start === start && here.end === end && BRACKETS.has(here.type)) return here;
+    here = here.children.find((c) => c.start <= start && c.end > start);
   }
   return null;
 }

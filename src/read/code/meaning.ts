@@ -14,9 +14,13 @@ const spanOf = (code: { readonly start: number; readonly end: number }): Span =>
 const at = <T extends Expression>(expression: T, span: Span): T => ({ ...expression, span });
 const sourceOf = (code: Code, env: Environment): string => env.text.slice(code.start, code.end).replace(/\s+/g, '');
 
+/** Operands inside one another beyond this are declined; long sums and products are chains, not nesting. */
+const MAX_NESTING = 600;
+
 /** The expression of a piece of code. Throws Declined with the place. */
-export function readMeaning(code: Code, env: Environment): Meaning {
-  const read = (inner: Code): Meaning => readMeaning(inner, env);
+export function readMeaning(code: Code, env: Environment, depth = 0): Meaning {
+  if (depth > MAX_NESTING) throw new Declined('unreadable', 'This expression is nested too deeply; select a smaller one.', spanOf(code));
+  const read = (inner: Code): Meaning => readMeaning(inner, env, depth + 1);
   switch (code.kind) {
     case 'literal':
       return literalMeaning(code, env);

@@ -14,7 +14,6 @@ function ask(own: CodeReader, text: string, language: string, at: number): void 
   for (const selection of [
     { start: place, end: place },
     { start: Math.max(0, place - 9), end: place },
-    { start: 0, end: text.length },
   ]) {
     const read = own.readCodeAt(text, language, selection);
     if (read.ok) {
@@ -39,9 +38,8 @@ describe.each(languages)('%s', (language) => {
   it('cut at every offset', () => {
     for (let end = 0; end <= program.length; end += 1) {
       const text = program.slice(0, end);
-      ask(reader, text, language, end);
-      if (end % 5 === 0) askAll(reader, text, language);
-      if (end % 3 === 0) ask(fallback, text, language, end);
+      ask(end % 3 === 0 ? fallback : reader, text, language, end);
+      if (end % 11 === 0) askAll(reader, text, language);
     }
   });
   it('with pieces cut out, doubled or replaced', () => {
@@ -53,14 +51,17 @@ describe.each(languages)('%s', (language) => {
         askAll(fallback, text, language);
         askAll(reader, text, language);
       }),
-      { numRuns: 25, seed: 20261 },
+      { numRuns: 15, seed: 20261 },
     );
   });
   it('nested 100 000 deep, and very long', () => {
-    for (const own of [reader, fallback]) {
-      for (const text of ['('.repeat(100_000), `${'('.repeat(100_000)}x${')'.repeat(100_000)}`, '-'.repeat(20_000) + 'x', 'x+'.repeat(5_000) + 'x', 'x^'.repeat(5_000) + 'x', '{'.repeat(20_000), 'f('.repeat(20_000), '['.repeat(20_000), 'a?'.repeat(5_000), '9'.repeat(50_000), 'if (x) '.repeat(3_000)]) {
-        own.readCode(text, language);
-        own.readCodeAt(text, language, { start: 5, end: 5 });
+    const thorough = language === 'c' || language === 'python' || language === 'julia' || language === 'matlab';
+    const deep = ['('.repeat(100_000), `${'('.repeat(100_000)}x${')'.repeat(100_000)}`, 'x^'.repeat(5_000) + 'x'];
+    const long = ['-'.repeat(20_000) + 'x', 'x+'.repeat(5_000) + 'x', '{'.repeat(20_000), 'f('.repeat(20_000), '['.repeat(20_000), 'a?'.repeat(5_000), '9'.repeat(50_000), 'if (x) '.repeat(3_000)];
+    for (const own of thorough ? [reader, fallback] : [reader]) {
+      for (const text of thorough ? [...deep, ...long] : deep) {
+        const read = own.readCode(text, language);
+        if (!read.ok) expect(read.error.message).toMatch(/^[A-Z].*\.$/s);
       }
     }
   });

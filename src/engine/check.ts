@@ -1,8 +1,33 @@
-/** `check`: replaced by the check room as soon as its door exists. */
-import { type Budget, failure, type Outcome } from '../outcome.ts';
+/** `check`: every printed expansion of a document, or one claim, judged. */
+import { check } from '../check/index.ts';
+import { type Budget, type Outcome, success } from '../outcome.ts';
 import type { CheckAnswer, CheckRequest } from '../protocol.ts';
+import { codeLanguage } from '../read/index.ts';
+import { readAllAssumptions } from './assumptions.ts';
 import type { EngineTools } from './resources.ts';
 
-export function askCheck(_request: CheckRequest, _tools: EngineTools, _time: Budget): Promise<Outcome<CheckAnswer>> {
-  return Promise.resolve(failure('bad-request', 'This version answers expand; checks come with a later one.'));
+export async function askCheck(request: CheckRequest, tools: EngineTools, time: Budget): Promise<Outcome<CheckAnswer>> {
+  const assumptions = readAllAssumptions(request.assume);
+  if (!assumptions.ok) return assumptions;
+  const { text, language, variable, point, side, of } = request;
+  if (codeLanguage(language)) {
+    try {
+      await tools.code.prepare(language);
+    } catch {
+      // Without its grammar a language is still read by operator precedence.
+    }
+  }
+  const checked = check(
+    {
+      text,
+      language,
+      assumptions: assumptions.value,
+      ...(variable === undefined ? {} : { variable }),
+      ...(point === undefined ? {} : { point }),
+      ...(side === undefined ? {} : { side }),
+      ...(of === undefined ? {} : { of }),
+    },
+    time,
+  );
+  return checked.ok ? success({ ok: true, ...checked.value }) : checked;
 }

@@ -1,9 +1,9 @@
 /** `expand`: text -> expansion, bound, terms needed, and the details asked for. */
-import type { Rational } from '../expression/index.ts';
-import { expand, expandRoot, type Expansion, type ExpansionProblem } from '../expand/index.ts';
+import { type Expression, type Rational, structureKey } from '../expression/index.ts';
+import { expand, expandRoot, expandSmall, type Expansion, type ExpansionProblem } from '../expand/index.ts';
 import { type Budget, failure, type Outcome, success } from '../outcome.ts';
 import type { ExpandAnswer, ExpandRequest, Failure } from '../protocol.ts';
-import { rationalOf, readExact } from '../read/index.ts';
+import { rationalOf, readExact, readSmall } from '../read/index.ts';
 import { readAllAssumptions } from './assumptions.ts';
 import { withBounds } from './bounds.ts';
 import { expansionAnswer } from './expansionAnswer.ts';
@@ -37,7 +37,7 @@ function expanderOf(request: ExpandRequest, source: SourceFormula, time: Budget)
     if (!first.ok) return first;
     return success({ first: first.value, withTerms: (terms) => solve({ terms }) });
   };
-  if (request.small) return failure('undecided', 'Several small quantities are not expanded in this build.');
+  if (request.small) return smallOf(request, request.small, source, run, time);
   if (request.unknown !== undefined || (source.unknown !== undefined && source.expression.kind === 'relation')) return rootOf(request, source, run, time);
   const question = questionOf(request, source);
   if (!question.ok) return question;
@@ -45,6 +45,29 @@ function expanderOf(request: ExpandRequest, source: SourceFormula, time: Budget)
 }
 
 type Run = (solve: (size: { readonly terms?: number; readonly order?: Rational }) => Outcome<Expansion>) => Outcome<Expander>;
+
+function smallOf(request: ExpandRequest, small: readonly string[], source: SourceFormula, run: Run, time: Budget): Outcome<Expander> {
+  const read = readSmall(small);
+  if (!read.ok) return read;
+  const assumptions = readAllAssumptions(request.assume);
+  if (!assumptions.ok) return assumptions;
+  const points = new Map<string, Expression>();
+  for (const [name, text] of Object.entries(request.points ?? {})) {
+    const point = readExact(text);
+    const symbol = source.readSymbol(name);
+    if (!point.ok || !symbol.ok) return failure('bad-request', `The base point "${name}: ${text}" cannot be read; write a symbol and an exact value.`);
+    points.set(structureKey(symbol.value), point.value);
+  }
+  const quantities = read.value.map(({ quantity, weight }) => {
+    const point = points.get(structureKey(quantity));
+    return { symbol: quantity, weight, ...(point ? { point } : {}) };
+  });
+  // `y << x`: larger quantities first.
+  const below = (a: Expression, b: Expression): boolean => read.value.some((q) => structureKey(q.quantity) === structureKey(a) && q.below.some((other) => structureKey(other) === structureKey(b)));
+  const iterated = read.value.some((q) => q.below.length > 0);
+  const ordered = iterated ? [...quantities].sort((a, b) => (below(a.symbol, b.symbol) ? 1 : below(b.symbol, a.symbol) ? -1 : 0)) : quantities;
+  return run((size) => expandSmall({ function: functionOf(source.expression), quantities: ordered, iterated, assumptions: assumptions.value, ...size }, time));
+}
 
 function rootOf(request: ExpandRequest, source: SourceFormula, run: Run, time: Budget): Outcome<Expander> {
   const name = request.unknown ?? source.unknown ?? '';

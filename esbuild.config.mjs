@@ -1,5 +1,5 @@
 /** Builds everything under dist/. `--watch` keeps building; `--tests` adds the suites that run inside an editor. */
-import { chmod, copyFile, mkdir, readdir, rm, stat } from 'node:fs/promises';
+import { chmod, copyFile, mkdir, readdir, readFile, rm, stat, writeFile } from 'node:fs/promises';
 import { createRequire } from 'node:module';
 import path from 'node:path';
 import { fileURLToPath } from 'node:url';
@@ -78,12 +78,30 @@ async function copyAssets() {
   await copyMatching(modules('katex', 'dist', 'fonts'), inRoot('dist', 'fonts'), PICTURE_FACES);
 }
 
+/** Licences of what is inside the bundles and beside them. */
+async function writeNotices(inputs) {
+  const names = new Set(['@vscode/tree-sitter-wasm', 'tree-sitter-c']);
+  for (const input of inputs) {
+    const name = /^(?:.*\/)?node_modules\/((?:@[^/]+\/)?[^/]+)\//.exec(input)?.[1];
+    if (name) names.add(name);
+  }
+  const notices = [];
+  for (const name of [...names].sort()) {
+    const folder = inRoot('node_modules', ...name.split('/'));
+    const { version, license } = JSON.parse(await readFile(path.join(folder, 'package.json'), 'utf8'));
+    const file = (await readdir(folder)).find((entry) => /^licen[cs]e/i.test(entry));
+    notices.push(`${name} ${version} (${license})\n\n${file ? (await readFile(path.join(folder, file), 'utf8')).trim() : ''}`);
+  }
+  await writeFile(inRoot('dist', 'third-party-notices.txt'), `${notices.join(`\n\n${'-'.repeat(72)}\n\n`)}\n`);
+}
+
 await rm(inRoot('dist'), { recursive: true, force: true });
 await copyAssets();
 if (watch) {
   await Promise.all(bundles.map(async (options) => (await esbuild.context(options)).watch()));
 } else {
-  await Promise.all(bundles.map((options) => esbuild.build(options)));
+  const results = await Promise.all(bundles.map((options) => esbuild.build({ ...options, metafile: true })));
+  await writeNotices(results.flatMap((result) => Object.keys(result.metafile.inputs)));
   await chmod(inRoot('dist', 'cli.js'), 0o755);
   const size = async (name) => `${name} ${Math.round((await stat(inRoot('dist', name))).size / 1024)} KB`;
   console.log((await Promise.all(['extension.js', 'extension.web.js', 'worker.js', 'worker.web.js', 'webview.js', 'cli.js'].map(size))).join(' · '));

@@ -34,6 +34,7 @@ const GREEK: Readonly<Record<string, string>> = {
 /** A symbol's LaTeX as a person would say it in a line of text. */
 export const plainSymbol = (latex: string): string =>
   latex
+    .replace(/\\(?:mathrm|mathit|mathbf|mathsf|text|operatorname)\s*\{([^{}]*)\}/g, '$1')
     .replace(/\\[dt]?frac\s*\{([^{}]*)\}\s*\{([^{}]*)\}/g, (_whole, over: string, under: string) => `${over}/${under}`)
     .replace(/\\([A-Za-z]+)\s*/g, (whole, name: string) => GREEK[name] ?? whole)
     .replaceAll(/[{}]/g, '');

@@ -49,12 +49,19 @@ function facts(answer: ExpandAnswer, asked: Question): HTMLElement {
   if (answer.oscillating) add(t('oscillating'));
   if (answer.bound) {
     if (answer.bound.value === null) add(t('unbounded', answer.bound.place ?? '?'), 'caution');
-    else add([h('span', { class: 'muted' }, `${asked.interval ? t('boundOn', ...asked.interval.map((end) => end.replaceAll('-', '−'))) : t('bound')} `), h('strong', { id: 'bound', title: answer.bound.value }, shortened(answer.bound.value, 'above')), answer.bound.factor ? [' · ', h('code', {}, answer.bound.factor)] : null]);
+    else add([h('span', { class: 'muted' }, `${asked.interval ? t('boundOn', ...asked.interval.map((end) => end.replaceAll('-', '−'))) : t('bound')} `), h('strong', { id: 'bound', title: answer.bound.value }, shortened(answer.bound.value, 'above')), answer.bound.factor ? [' · ', h('code', {}, answer.bound.factor)] : against(answer.bound.value, asked.tolerance)]);
   }
   if (answer.needed) lines.push(...neededLines(answer, asked));
   if (answer.at) add(`${t('at')} ${t('atRow', answer.at.argument, answer.at.function, answer.at.sum, answer.at.error)}`);
   if (answer.radius) add(answer.radius.value === 'inf' ? t('entire') : t('radius', answer.radius.value), 'muted');
   return h('div', { class: 'facts', 'aria-live': 'polite' }, lines);
+}
+
+/** A bound is an upper end, so only "within" is certain; above means that this number of terms is not proved to do. */
+function against(bound: string, tolerance: string | undefined): Child {
+  if (!tolerance || !(Number(tolerance) > 0)) return null;
+  const within = Number(bound) <= Number(tolerance);
+  return h('span', { class: within ? 'muted' : 'above' }, ` ${t(within ? 'within' : 'above')}`);
 }
 
 function neededLines(answer: ExpandAnswer, asked: Question): Child[] {

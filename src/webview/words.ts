@@ -27,6 +27,8 @@ export const WORDS = {
   order: 'order',
   bound: 'proven bound',
   boundOn: 'proven bound on [{0}, {1}]',
+  within: 'within the tolerance',
+  above: 'above the tolerance',
   needed: 'needed',
   neededFor: '{0} terms keep {1}',
   neededOne: 'One term keeps {0}',

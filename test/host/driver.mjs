@@ -124,7 +124,7 @@ export function placeOf(source, text, occurrence = 0) {
 
 /** The hover at the cursor, opened by keyboard. Returns its text once it holds `wanted`. */
 export async function hoverAtCursor(page, wanted) {
-  const hover = page.locator('.monaco-hover .hover-contents', { hasText: wanted }).first();
+  const hover = page.locator('.monaco-hover .hover-contents:visible', { hasText: wanted }).first();
   for (let i = 0; i < 8; i += 1) {
     await page.keyboard.press('Control+k');
     await page.keyboard.press('Control+i');
@@ -133,11 +133,14 @@ export async function hoverAtCursor(page, wanted) {
       break;
     } catch {
       await page.keyboard.press('Escape');
-      if (i === 7) throw new Error(`no hover with ${JSON.stringify(wanted)}; shown: ${JSON.stringify(await page.locator('.monaco-hover').allInnerTexts())}`);
+      if (i === 7) throw new Error(`no hover with ${JSON.stringify(wanted)}; shown: ${JSON.stringify(await shownHovers(page))}`);
     }
   }
-  return (await page.locator('.monaco-hover .hover-contents').allInnerTexts()).join('\n').replaceAll('\u00a0', ' ');
+  return (await shownHovers(page)).join('\n').replaceAll('\u00a0', ' ');
 }
+
+/** A hover that was closed stays in the page, out of sight. */
+export const shownHovers = (page) => page.locator('.monaco-hover .hover-contents:visible').allInnerTexts();
 
 export async function closeHover(page) {
   await page.keyboard.press('Escape');

@@ -2,7 +2,7 @@
 import { readFileSync } from 'node:fs';
 import path from 'node:path';
 import { ROOT } from '../../src/start/workbench.mjs';
-import { chooseFix, closeHover, editorText, expansionFrame, focusEditor, goTo, hoverAtCursor, openFixes, openFromExplorer, pageSays, pause, placeOf, runCommand, select, waitForText } from './driver.mjs';
+import { chooseFix, closeHover, editorText, expansionFrame, focusEditor, goTo, hoverAtCursor, openFixes, openFromExplorer, pageSays, pause, placeOf, runCommand, select, shownHovers, waitForText } from './driver.mjs';
 
 export const DEMO = path.join(ROOT, 'media/demo');
 const source = (name) => readFileSync(path.join(DEMO, name), 'utf8');
@@ -113,7 +113,7 @@ export const scenes = {
     await page.keyboard.press('Control+k');
     await page.keyboard.press('Control+i');
     await pause(1500);
-    const shown = await page.locator('.monaco-hover .hover-contents').allInnerTexts();
+    const shown = await shownHovers(page);
     holds(!shown.join(' ').includes('Expansion page'), `there is a hover: ${shown.join(' ')}`);
     await closeHover(page);
   },

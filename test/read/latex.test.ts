@@ -104,6 +104,9 @@ const TABLE: readonly (readonly [string, string])[] = [
   ['f^{(4)}(x)', '@f<4>(x)'],
   ['x(\\epsilon)', '@x<0>(\\epsilon)'],
   ['f(x,y)', '@f<0,0>(x, y)'],
+  ['u(x+h) + u(x-h) = 2u + h^2 u_{xx} + O(h^4)', '(@u<0>((x + h)) + @u<0>((x + -h))) = ([2 @u<0>(x)] + [h^2 @u<2>(x)] + O(h^4))'],
+  ['y(t + \\Delta t)', '@y<0>((t + \\Delta t))'],
+  ['\\frac{\\partial E_n}{\\partial w} = \\frac{E_n(w + \\epsilon)}{\\epsilon}', 'd1/dw(@E_n<0>(w)) = {@E_n<0>((w + \\epsilon)) / \\epsilon}'],
   ['x(1+x)', '[x (1 + x)]'],
   // Constants.
   ['e^x', '#e^x'],
@@ -128,8 +131,8 @@ const TABLE: readonly (readonly [string, string])[] = [
   ['\\sum_{k\\ge 0} x^k', 'sum(k = 0 to #infinity, x^k)'],
   ['\\prod_{k=1}^n (1+kx) - 1', '(product(k = 1 to n, (1 + [k x])) + -1)'],
   ['\\frac{d}{dx}\\frac{\\sin x}{x}', 'd1/dx({sin(x) / x})'],
-  ['\\frac{d^2 y}{dx^2}', 'd2/dx(y)'],
-  ['\\frac{\\partial^2}{\\partial x\\partial y} f', 'd1/dx(d1/dy(f))'],
+  ['\\frac{d^2 y}{dx^2}', 'd2/dx(@y<0>(x))'],
+  ['\\frac{\\partial^2}{\\partial x\\partial y} f', 'd1/dx(d1/dy(@f<0,0>(x, y)))'],
   ['\\frac{d}{2R}', '{d / [2 R]}'],
   ['\\lim_{x\\to 0}\\frac{\\sin x}{x}', 'limit(x to 0, {sin(x) / x})'],
   // Remainders.
@@ -163,6 +166,8 @@ const TABLE: readonly (readonly [string, string])[] = [
   ['\\boxed{x^2}', 'x^2'],
   ['x_{\\max}', 'x_\\max'],
   ['v_\\mathrm{max} + v_{\\text{max}}', '(v_{max} + v_{max})'],
+  ['u^{n+1}_i', 'u_i^(n + 1)'],
+  ['H^{(1)}_\\nu(x)', 'hankel1(\\nu, x)'],
   ['k_{B}T', '[k_B T]'],
   ['\\varepsilon + \\epsilon', '(\\epsilon + \\epsilon)'],
   ['\\hat{x} + \\dot\\theta', '(\\hat{x} + \\dot{\\theta})'],
@@ -269,6 +274,9 @@ describe('what cannot be read', () => {
     ['\\operatorname{foo}(x)', 'unknown-function', 0, 18],
     ['\\int_0^1 x', 'unreadable', 0, 4],
     ['\\sum_{k} k', 'unreadable', 0, 4],
+    ['f^{(n)}(a)', 'unreadable', 0, 1],
+    ['\\frac{d^n}{dx^n} f', 'unreadable', 6, 7],
+    ['{sin}(x)', 'unreadable', 1, 2],
     ['\\begin{pmatrix} 1 & 2 \\end{pmatrix}', 'unreadable', 0, 15],
   ])('%s', (text, code, start, end) => {
     const read = readLatex(text);

@@ -1,7 +1,7 @@
 /** Mathematics and code of a LaTeX document. One pass over the characters, each looked at a bounded number of times. */
 import { groupEnd } from '../math/macros.ts';
 import type { Region } from './regions.ts';
-import { formulasOf } from './rows.ts';
+import { formulasOf, labelsOf } from './rows.ts';
 
 const MATH = new Set('equation align alignat gather multline eqnarray flalign displaymath math IEEEeqnarray dmath xalignat xxalignat empheq dgroup'.split(' '));
 const VERBATIM = new Set('verbatim Verbatim lstlisting minted comment filecontents alltt BVerbatim LVerbatim spverbatim listing pycode sagesilent'.split(' '));
@@ -30,9 +30,7 @@ export function latexRegions(text: string, from = 0, to = text.length): readonly
 
   function math(start: number, end: number, contentStart: number, contentEnd: number, kind: 'inline' | 'display' | 'environment', environment: string | null): void {
     const formulas = formulasOf(text, contentStart, contentEnd, environment);
-    const content = text.slice(contentStart, contentEnd);
-    const label = /\\label\s*\{([^}]*)\}/.exec(content)?.[1];
-    const tag = /\\tag\*?\s*\{([^}]*)\}/.exec(content)?.[1];
+    const [label, tag] = kind === 'inline' ? [undefined, undefined] : labelsOf(text.slice(contentStart, contentEnd));
     out.push({ start, end, contentStart, contentEnd, kind, ...(environment === null ? {} : { environment }), ...(label === undefined ? {} : { label }), ...(tag === undefined ? {} : { tag }), language: 'latex', formulas });
   }
 
@@ -194,6 +192,16 @@ export function latexRegions(text: string, from = 0, to = text.length): readonly
 
 const isLetter = (c: number): boolean => (c >= 65 && c <= 90) || (c >= 97 && c <= 122) || c === 64;
 
+/** Only blanks up to the next line end. */
+function isBlankLine(text: string, from: number): boolean {
+  for (let i = from; i < text.length; i += 1) {
+    const c = text.charCodeAt(i);
+    if (c === 10) return true;
+    if (c !== 32 && c !== 9 && c !== 13) return false;
+  }
+  return false;
+}
+
 function lineEnd(text: string, from: number, to: number): number {
   const line = text.indexOf('\n', from);
   return line < 0 || line > to ? to : line + 1;
@@ -209,7 +217,7 @@ function inlineEnd(text: string, from: number, to: number, balanced: boolean): n
     else if (c === 123) braces += 1;
     else if (c === 125) braces -= 1;
     else if (c === 36 && (braces <= 0 || !balanced)) return i;
-    else if (c === 10 && /^[ \t\r]*\n/.test(text.slice(i + 1, i + 40))) return -1;
+    else if (c === 10 && isBlankLine(text, i + 1)) return -1;
   }
   return -1;
 }
@@ -223,7 +231,7 @@ function displayEnd(text: string, from: number, to: number): number {
     else if (c === 123) braces += 1;
     else if (c === 125) braces -= 1;
     else if (c === 36 && braces <= 0 && text.charCodeAt(i + 1) === 36) return i;
-    else if (c === 10 && /^[ \t\r]*\n/.test(text.slice(i + 1, i + 40))) return -1;
+    else if (c === 10 && isBlankLine(text, i + 1)) return -1;
   }
   return -1;
 }
@@ -235,7 +243,7 @@ function delimiterEnd(text: string, from: number, to: number, closer: string): n
       if (text.startsWith(closer, i)) return i;
       i += 1;
     } else if (c === 37) i = lineEnd(text, i, to) - 1;
-    else if (c === 10 && /^[ \t\r]*\n/.test(text.slice(i + 1, i + 40))) return -1;
+    else if (c === 10 && isBlankLine(text, i + 1)) return -1;
   }
   return -1;
 }

@@ -5,7 +5,7 @@ import { math } from 'micromark-extension-math';
 import type { Comment } from './comments.ts';
 import { latexRegions } from './latex.ts';
 import type { Region } from './regions.ts';
-import { formulasOf } from './rows.ts';
+import { formulasOf, labelsOf } from './rows.ts';
 
 interface MarkdownNode {
   readonly type: string;
@@ -63,8 +63,7 @@ function mathRegion(text: string, start: number, end: number, display: boolean):
 function latexRegion(text: string, start: number, end: number, contentStart: number, contentEnd: number, kind: Region['kind']): Region {
   const content = text.slice(contentStart, contentEnd);
   const environment = /^\\begin\{(\w+\*?)\}/.exec(content)?.[1];
-  const label = /\\label\s*\{([^}]*)\}/.exec(content)?.[1];
-  const tag = /\\tag\*?\s*\{([^}]*)\}/.exec(content)?.[1];
+  const [label, tag] = labelsOf(content);
   return { start, end, contentStart, contentEnd, kind, ...(environment ? { environment } : {}), ...(label === undefined ? {} : { label }), ...(tag === undefined ? {} : { tag }), language: 'latex', formulas: formulasOf(text, contentStart, contentEnd, environment && /^(?:align|gather|eqnarray|cases)/.test(environment) ? environment : null) };
 }
 

@@ -9,6 +9,12 @@ const OPEN_END = /(?:[=+*/(<-]|\\(?:approx|simeq|sim|times|cdot|left\(|left\[|bi
 
 /** The formulas between `from` and `to` of the text, for an environment name or null. Linear. */
 export function formulasOf(text: string, from: number, to: number, environment: string | null): readonly FormulaPlace[] {
+  const whole = text.slice(from, to);
+  if (!whole.includes('\\\\')) {
+    const [label, tag] = labelsOf(whole);
+    const place = trimPlace(text, { start: from, end: to, ...(label === undefined ? {} : { label }), ...(tag === undefined ? {} : { tag }), rows: 1 });
+    return place.start < place.end ? [place] : [];
+  }
   const single = environment !== null && ONE_FORMULA.test(environment);
   const out: { start: number; end: number; label?: string; tag?: string; rows: number }[] = [];
   /** Brackets still open in the last formula. */
@@ -16,10 +22,9 @@ export function formulasOf(text: string, from: number, to: number, environment: 
   for (const row of splitRows(text, from, to)) {
     const content = text.slice(row.start, row.end);
     if (content.replace(/%[^\n]*/g, '').trim() === '') continue;
-    const label = /\\label\s*\{([^}]*)\}/.exec(content)?.[1];
-    const tag = /\\tag\*?\s*\{([^}]*)\}/.exec(content)?.[1];
+    const [label, tag] = labelsOf(content);
     const last = out[out.length - 1];
-    const continued = last !== undefined && (single || open > 0 || CONTINUES.test(content) || OPEN_END.test(text.slice(Math.max(last.start, last.end - 300), last.end).replace(/\\(?:label|tag)\s*\{[^}]*\}|\\nonumber|\\notag/g, '')));
+    const continued = last !== undefined && (single || open > 0 || CONTINUES.test(content) || endsOpen(text, last.start, last.end));
     if (continued) {
       last.end = row.end;
       last.rows += 1;
@@ -34,11 +39,26 @@ export function formulasOf(text: string, from: number, to: number, environment: 
   return out.map((f) => trimPlace(text, f));
 }
 
+/** Texts of `\label` and `\tag`, looked for only where such a command stands. */
+export function labelsOf(content: string): readonly [string | undefined, string | undefined] {
+  const label = content.includes('\\label') ? /\\label\s*\{([^}]*)\}/.exec(content)?.[1] : undefined;
+  const tag = content.includes('\\tag') ? /\\tag\*?\s*\{([^}]*)\}/.exec(content)?.[1] : undefined;
+  return [label, tag];
+}
+
 function trimPlace<T extends { start: number; end: number }>(text: string, place: T): T {
   let { start, end } = place;
   while (start < end && /\s/.test(text.charAt(start))) start += 1;
   while (end > start && /\s/.test(text.charAt(end - 1))) end -= 1;
   return { ...place, start, end };
+}
+
+/** The row ends in an operator or relation sign, numbering commands aside: it goes on in the next. */
+function endsOpen(text: string, start: number, end: number): boolean {
+  let tail = text.slice(Math.max(start, end - 200), end);
+  if (/\\(?:label|tag|no)/.test(tail)) tail = tail.replace(/\\(?:label|tag)\s*\{[^}]*\}|\\nonumber|\\notag/g, '');
+  tail = tail.trimEnd().slice(-16);
+  return /[=+*/(<&\-\[a-z]$/.test(tail) && OPEN_END.test(tail);
 }
 
 /** Brackets opened less brackets closed, escaped ones counted alike. */

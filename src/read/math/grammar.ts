@@ -226,8 +226,8 @@ function factorWithSign(p: State, allowed: boolean): Expression {
   const start = p.at;
   if (allowed && isMark(peek(p), '-', '+')) {
     const sign = next(p);
-    if (!p.grammar.startsFactor(p)) missing(p, sign);
-    const operand = p.grammar.factor(p);
+    if (!p.grammar.startsFactor(p) && !isMark(peek(p), '-', '+')) missing(p, sign);
+    const operand = deeper(p, () => factorWithSign(p, true));
     return sign.text === '-' ? node(p, start, { kind: 'negation', operand }) : operand;
   }
   return p.grammar.factor(p);

@@ -62,7 +62,9 @@ export function collectMacros(text: string, inherited: MacroTable = NO_MACROS): 
   if (!/\\(?:def|gdef|let|Declare|(?:re|provide)?newcommand|providecommand|renewcommand)/.test(text)) return inherited;
   const table = new Map(inherited);
   DEFINITION.lastIndex = 0;
-  for (let found = DEFINITION.exec(text); found; found = DEFINITION.exec(text)) {
+  /** Bodies that never end; a half-typed document may hold some, and each costs a look to its end. */
+  let unfinished = 0;
+  for (let found = DEFINITION.exec(text); found && unfinished < 50; found = DEFINITION.exec(text)) {
     const kind = found[0].replace(/[\\*]/g, '');
     const named = commandName(text, DEFINITION.lastIndex);
     if (!named) continue;
@@ -103,7 +105,10 @@ export function collectMacros(text: string, inherited: MacroTable = NO_MACROS): 
       }
     }
     const body = argumentAt(text, at);
-    if (!body) continue;
+    if (!body) {
+      unfinished += 1;
+      continue;
+    }
     DEFINITION.lastIndex = body.end;
     table.set(named.name, {
       name: named.name,

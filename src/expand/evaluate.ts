@@ -1,8 +1,8 @@
 /** From a tree to the multiseries it stands for. */
-import { build, children, type Expression, Q } from '../expression/index.ts';
+import { children, type Expression, Q } from '../expression/index.ts';
 import { Declined } from '../outcome.ts';
 import {
-  add, divide, eventualSign, exactOf, exponential, generalPower, isLiteralOne, isLiteralZero, isRational, isRealMulti, monomialOf, multiply, negate, type Multi, orderSeries, power,
+  add, divide, eventualSign, exactOf, exponential, generalPower, isLiteralOne, isLiteralZero, isRational, isKnownZero, isRealMulti, monomialOf, multiply, negate, type Multi, orderSeries, power,
   Series, theta,
 } from '../series/index.ts';
 import { evaluateApply } from './apply.ts';
@@ -140,6 +140,7 @@ function evaluateDerivative(s: Session, e: Extract<Expression, { kind: 'derivati
   if (bound === undefined) throw new Declined('no-expansion', 'A derivative in a parameter is not expanded; carry it out first.');
   const speed = theta(c, bound);
   let value = evaluate(s, e.body);
+  if (isKnownZero(c, value)) return Q.ZERO;
   for (let k = 0; k < e.times; k += 1) value = divide(c, theta(c, value), speed);
   return value;
 }

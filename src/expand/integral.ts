@@ -1,7 +1,7 @@
 /** Integral nodes whose limits move: the derivative in t is integrated term by term, and the constant is fixed by the limits. */
 import { children, type Expression, type IntegralNode, Q } from '../expression/index.ts';
 import { Declined } from '../outcome.ts';
-import { eventualSign, exactOf, growth, integrate, isZero, type Multi, multiply, Series, split, subtract, theta, withExact } from '../series/index.ts';
+import { eventualSign, exactOf, growth, integrate, isKnownZero, isZero, type Multi, multiply, Series, split, subtract, theta, withExact } from '../series/index.ts';
 import type { Evaluate } from './calls.ts';
 import { bind, type Session } from './session.ts';
 
@@ -66,6 +66,7 @@ function sameLimit(s: Session, a: End, b: End): boolean {
 /** The antiderivative of the integrand along a moving end. */
 function primitiveAt(s: Session, e: IntegralNode, name: string, end: Series, evaluate: Evaluate): Multi {
   const value = evaluate(bind(s, [[name, end]]), e.body);
+  if (isKnownZero(s.context, value)) return Q.ZERO;
   return integrate(s.context, multiply(s.context, value, theta(s.context, end)));
 }
 

@@ -5,7 +5,7 @@ export { compareExponents, signOfExponent, undecidedSign } from './exponent.ts';
 export { divide, exponential, generalPower, isRealMulti, levels, logarithm, pi, power, reciprocal, requireOscillation, withExact } from './exponential.ts';
 export { integrate } from './integration.ts';
 export { type InverseFunction, inverse } from './inverse.ts';
-export { compareMonomials, decideSign, eventualSign, type Growth, growth, isZero, leading, type Monomial, monomialOf, nextTerm, nextTermOrOrder } from './leading.ts';
+export { compareMonomials, decideSign, eventualSign, type Growth, growth, isKnownZero, isZero, leading, type Monomial, monomialOf, nextTerm, nextTermOrOrder } from './leading.ts';
 export { addElements, type Context, exactOf, isLiteralOne, isLiteralZero, isRational, type Lead, type Multi, multiplyElements, negateElement, type Notes, type Scale, type ScaleElement, Series, Stream, type Term, unnamed } from './multi.ts';
 export { monomialSeries, multiplyMonomials, orderSeries, raiseMonomial, truncate, type Truncation, unitMonomial } from './monomials.ts';
 export { plainText } from './plain.ts';

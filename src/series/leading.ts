@@ -78,6 +78,16 @@ export function isZero(c: Context, m: Multi): boolean {
   return truth === 'yes';
 }
 
+/** True if m is found to be identically zero; false where it is not, or where that could not be decided. */
+export function isKnownZero(c: Context, m: Multi): boolean {
+  try {
+    return isZero(c, m);
+  } catch (error) {
+    if (error instanceof Declined && error.failure.code !== 'over-budget') return false;
+    throw error;
+  }
+}
+
 /** constant * product of element^exponent, from fast to slow; exponents that are zero are left out. */
 export interface Monomial {
   readonly constant: Element;

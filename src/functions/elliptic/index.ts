@@ -3,6 +3,8 @@ import { build, type Expression } from '../../expression/index.ts';
 import type { FunctionDescription } from '../description.ts';
 import { minus, over, pi, times } from '../compose.ts';
 import { names } from '../naming.ts';
+import { enclosed } from '../enclosure/wrap.ts';
+import { ellipticAlgorithms } from './enclosure.ts';
 import { completeEquation, completeLocal, completeValue, eDerivative, incompleteDerivative, incompleteLocal, incompleteValue, kDerivative, piDerivative, piLocal, piValue } from './integrals.ts';
 import { jacobiDerivative, jacobiLocal, jacobiValue } from './jacobi.ts';
 
@@ -10,7 +12,7 @@ const { call, number, power } = build;
 const sq = (e: Expression): Expression => power(e, 2);
 const swapLast = { read: (a: readonly Expression[]): readonly Expression[] | null => (a.length === 2 ? [...a].reverse() : null), write: (a: readonly Expression[]): readonly Expression[] | null => [...a].reverse() };
 
-export const ellipticFunctions: readonly FunctionDescription[] = [
+const descriptions: readonly FunctionDescription[] = [
   { id: 'ellipticK', title: 'complete elliptic integral of the first kind (modulus k)', arity: 1, parity: 'even', names: names({ latex: ['\\operatorname{K}'], latexLetters: ['K'], latexForm: ([k = '']) => `K(${k})`, unicodeForm: ([k = '']) => `K(${k})`, mpmath: ([k = '']) => `ellipk((${k})**2)`, code: { cpp: ['comp_ellint_1'] } }), definition: ([k = number(0)]) => call('ellipticKParameter', sq(k)), domain: '-1 < k < 1', source: 'DLMF 19.2.8' },
   { id: 'ellipticE', title: 'complete elliptic integral of the second kind (modulus k)', arity: 1, parity: 'even', names: names({ latex: ['\\operatorname{E}'], latexLetters: ['E'], latexForm: ([k = '']) => `E(${k})`, unicodeForm: ([k = '']) => `E(${k})`, mpmath: ([k = '']) => `ellipe((${k})**2)`, code: { cpp: ['comp_ellint_2'] } }), definition: ([k = number(0)]) => call('ellipticEParameter', sq(k)), domain: '-1 <= k <= 1', source: 'DLMF 19.2.8' },
   { id: 'ellipticF', title: 'elliptic integral of the first kind (amplitude, modulus k)', arity: 2, names: names({ latex: ['\\operatorname{F}'], latexLetters: ['F'], latexForm: (a) => `F(${a.join(', ')})`, unicodeForm: (a) => `F(${a.join(', ')})`, mpmath: ([p = '', k = '']) => `ellipf(${p},(${k})**2)`, code: { cpp: 'ellint_1' }, codeArguments: { 'cpp:ellint_1': swapLast } }), definition: ([p = number(0), k = number(0)]) => call('ellipticFParameter', p, sq(k)), source: 'DLMF 19.2.4' },
@@ -33,3 +35,5 @@ export const ellipticFunctions: readonly FunctionDescription[] = [
   })),
   { id: 'agm', title: 'arithmetic-geometric mean', arity: [1, 2], names: names({ latex: ['\\operatorname{agm}', '\\operatorname{M}', '\\operatorname{AGM}'], latexLetters: ['M'], latexForm: (a) => `\\operatorname{agm}(${a.join(', ')})`, mpmath: 'agm', code: { python: 'agm' } }), definition: (args) => { const [a = number(1), b = number(1)] = args.length === 1 ? [number(1), ...args] : args; return over(times(pi, a), times(2, call('ellipticKParameter', minus(1, over(sq(b), sq(a)))))); }, domain: 'positive arguments', source: 'DLMF 19.8.1' },
 ];
+
+export const ellipticFunctions = enclosed(descriptions, ellipticAlgorithms);

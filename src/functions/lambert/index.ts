@@ -2,6 +2,8 @@
 import { build, type Expression } from '../../expression/index.ts';
 import type { FunctionDescription } from '../description.ts';
 import { names } from '../naming.ts';
+import { enclosed } from '../enclosure/wrap.ts';
+import { lambertAlgorithms } from './enclosure.ts';
 import { lambertLocal, lambertValue, wrightLocal, wrightValue } from './lambert.ts';
 
 const { call, number, product, quotient, sum } = build;
@@ -10,7 +12,7 @@ const zeroBranch = {
   write: (a: readonly Expression[]): readonly Expression[] | null => [...a].reverse(),
 };
 
-export const lambertFunctions: readonly FunctionDescription[] = [
+const descriptions: readonly FunctionDescription[] = [
   {
     id: 'lambertW',
     title: 'Lambert W function (branch, argument)',
@@ -43,3 +45,5 @@ export const lambertFunctions: readonly FunctionDescription[] = [
   },
   { id: 'wrightOmega', title: 'Wright omega function, y + ln y = x', arity: 1, local: wrightLocal, value: wrightValue, names: names({ latex: ['\\operatorname{wrightomega}', '\\omega_W'], latexForm: ([x = '']) => `W(e^{${x}})`, mpmath: ([x = '']) => `lambertw(exp(${x}))`, code: { python: 'wrightomega', matlab: 'wrightOmega' } }), derivative: ([x = number(0)]) => quotient(call('wrightOmega', x), sum(number(1), call('wrightOmega', x))), source: 'Corless & Jeffrey, The Wright omega function (2002), from memory' },
 ];
+
+export const lambertFunctions = enclosed(descriptions, lambertAlgorithms);

@@ -2,12 +2,14 @@
 import type { Assumption, Expression, Rational } from '../expression/index.ts';
 import type { Expansion } from '../expand/index.ts';
 import { attempt, type Budget, type Outcome } from '../outcome.ts';
+import { type IntegralValue, integralValue } from './integral.ts';
 import { ladderOf, type NeededProblem, reachWith, termsNeededFor } from './needed.ts';
 import { bound } from './remainder.ts';
 import type { BoundProblem, LadderEntry, Measure, RemainderBound, TermsNeeded, ValueAt } from './types.ts';
 import { valueAtArgument } from './value.ts';
 
 export type { BoundProblem, ClosedInterval, ExpansionWithTerms, LadderEntry, Measure, Reach, RemainderBound, TermsNeeded, ValueAt } from './types.ts';
+export type { IntegralValue } from './integral.ts';
 export type { NeededProblem } from './needed.ts';
 
 /** sup |f - sum| (or relative to |f|) over a closed interval: a proven upper and lower bound. Fails with needs-assumption (a parameter without a range), undecided, over-budget, bad-request. */
@@ -28,3 +30,6 @@ export const reachFor = (
 /** f, sum, f - sum and the percentage at an exact argument, each enclosed to about 10 digits. */
 export const valueAt = (expansion: Expansion, argument: Expression, assumptions: readonly Assumption[], budget: Budget): Outcome<ValueAt> => attempt(() => valueAtArgument(expansion, argument, assumptions, budget));
 export { boundDifference, type DifferenceBound, type DifferenceProblem, polynomialOf } from './difference.ts';
+
+/** The value of an expression that holds definite integrals, enclosed to an absolute tolerance; singular and infinite ends included. Fails with bad-request where the integral diverges, undecided where it could not be enclosed. */
+export const definiteIntegral = (expression: Expression, tolerance: Rational, assumptions: readonly Assumption[], budget: Budget): Outcome<IntegralValue> => attempt(() => integralValue(expression, tolerance, assumptions, budget));

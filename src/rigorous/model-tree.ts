@@ -1,6 +1,6 @@
 /** Local models of expression trees. */
 import type { Expression, Rational } from '../expression/index.ts';
-import { build, dependsOn, freeSymbols, Q } from '../expression/index.ts';
+import { build, dependsOn, freeSymbols, Q, sameExpression } from '../expression/index.ts';
 import type { ElementaryName, RealArithmetic } from './arithmetic.ts';
 import { type EnclosableFunction, evaluateTree, isElementaryName, rationalOf, type TreeArithmetic } from './enclose.ts';
 import type { Model, ModelArithmetic } from './model.ts';
@@ -90,7 +90,8 @@ export function logModelOfTree<T>(e: Expression, context: ModelTreeContext<T>): 
         return fold(node.factors, (x, y) => logs.multiply(x, y));
       case 'quotient': {
         const [numerator, denominator] = [visit(node.numerator), visit(node.denominator)];
-        if (numerator === null || denominator === null) return null;
+        if (denominator === null) return withoutGrowth(node.numerator, node.denominator);
+        if (numerator === null) return null;
         const divisor = pure(denominator);
         if (divisor !== null) return logs.each(numerator, (f) => m.divide(f, divisor));
         const inverse = logs.power(denominator, { num: -1n, den: 1n });
@@ -108,6 +109,15 @@ export function logModelOfTree<T>(e: Expression, context: ModelTreeContext<T>): 
       default:
         return null;
     }
+  };
+  /** N/D where D is a sum with e^u, u growing: N e^-u / (D e^-u), the second computed term by term. */
+  const withoutGrowth = (numerator: Expression, denominator: Expression): LogModel<T> | null => {
+    const u = growingExponent(denominator);
+    const model = u && pure(visit(u));
+    if (!u || !model || model.valuation >= 0) return null;
+    const factor = build.call('exp', build.negation(u));
+    const scaled = timesDecay(denominator, u, factor);
+    return scaled && visit(build.quotient(build.product(numerator, factor), scaled));
   };
   const fold = (members: readonly Expression[], combine: (x: LogModel<T>, y: LogModel<T>) => LogModel<T> | null): LogModel<T> | null => {
     let total: LogModel<T> | null = null;
@@ -243,6 +253,67 @@ export function logModelOfTree<T>(e: Expression, context: ModelTreeContext<T>): 
     return evaluateTree(build.call(id, ...args.map((arg, k) => (k === index ? build.symbol(names[k] ?? '') : arg))), new Map(values.flatMap((v, k) => (k === index ? [[names[k] ?? '', v] as const] : []))), trees, context.describe);
   };
   return visit(e);
+}
+
+/** The argument of the first exponential in a sum of exponentials and other terms. */
+function growingExponent(e: Expression): Expression | null {
+  switch (e.kind) {
+    case 'sum':
+      return first(e.terms);
+    case 'product':
+      return first(e.factors);
+    case 'negation':
+      return growingExponent(e.operand);
+    case 'power':
+      return e.base.kind === 'constant' && e.base.name === 'e' ? e.exponent : null;
+    case 'call':
+      return ['exp', 'expm1', 'sinh', 'cosh'].includes(e.function) ? (e.args[0] ?? null) : null;
+    default:
+      return null;
+  }
+}
+function first(members: readonly Expression[]): Expression | null {
+  for (const member of members) {
+    const found = growingExponent(member);
+    if (found) return found;
+  }
+  return null;
+}
+
+/** e times e^-u with the growth of e^u, e^u - 1, sinh u, cosh u taken out. */
+function timesDecay(e: Expression, u: Expression, decay: Expression): Expression | null {
+  const half = build.number({ num: 1n, den: 2n });
+  const one = build.number(1);
+  const isThis = (x: Expression | undefined): boolean => x !== undefined && sameExpression(x, u);
+  switch (e.kind) {
+    case 'sum': {
+      const terms = e.terms.map((term) => timesDecay(term, u, decay));
+      return terms.every((term) => term !== null) ? build.sum(...terms) : null;
+    }
+    case 'negation': {
+      const inner = timesDecay(e.operand, u, decay);
+      return inner && build.negation(inner);
+    }
+    case 'product': {
+      const index = e.factors.findIndex((factor) => growingExponent(factor) !== null);
+      const factor = e.factors[index];
+      const inner = factor && timesDecay(factor, u, decay);
+      return factor === undefined ? build.product(e, decay) : (inner ?? null) && build.product(...e.factors.filter((_, k) => k !== index), inner ?? one);
+    }
+    case 'power':
+      if (e.base.kind === 'constant' && e.base.name === 'e' && isThis(e.exponent)) return one;
+      return build.product(e, decay);
+    case 'call': {
+      if (!isThis(e.args[0])) return build.product(e, decay);
+      const square = build.product(decay, decay);
+      if (e.function === 'exp') return one;
+      if (e.function === 'expm1') return build.difference(one, decay);
+      if (e.function === 'sinh') return build.product(half, build.difference(one, square));
+      return e.function === 'cosh' ? build.product(half, build.sum(one, square)) : build.product(e, decay);
+    }
+    default:
+      return build.product(e, decay);
+  }
 }
 
 interface LogArithmetic<T> {

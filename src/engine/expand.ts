@@ -7,7 +7,8 @@ import { rationalOf, readExact, readSmall } from '../read/index.ts';
 import { readAllAssumptions } from './assumptions.ts';
 import { withBounds } from './bounds.ts';
 import { expansionAnswer } from './expansionAnswer.ts';
-import { equationOf, functionOf, questionOf, readPoint, variableOf } from './question.ts';
+import { targetOf } from './conditions.ts';
+import { equationOf, functionOf, pointOf, questionOf, readPoint, variableOf } from './question.ts';
 import { insertionAnswer } from './insertion.ts';
 import { readingAnswer } from './reading.ts';
 import type { EngineTools } from './resources.ts';
@@ -41,7 +42,10 @@ function expanderOf(request: ExpandRequest, source: SourceFormula, time: Budget)
   if (request.unknown !== undefined || (source.unknown !== undefined && source.expression.kind === 'relation')) return rootOf(request, source, run, time);
   const question = questionOf(request, source);
   if (!question.ok) return question;
-  return run((n) => expand({ ...question.value, ...n } satisfies ExpansionProblem, time));
+  const { stated, ...problem } = question.value;
+  const withStated = (outcome: Outcome<Expansion>): Outcome<Expansion> =>
+    outcome.ok && stated.length > 0 ? success({ ...outcome.value, assumptions: [...outcome.value.assumptions, ...stated.filter((s) => !outcome.value.assumptions.includes(s))] }) : outcome;
+  return run((n) => withStated(expand({ ...problem, ...n } satisfies ExpansionProblem, time)));
 }
 
 type Run = (solve: (size: { readonly terms?: number; readonly order?: Rational }) => Outcome<Expansion>) => Outcome<Expander>;
@@ -76,7 +80,8 @@ function rootOf(request: ExpandRequest, source: SourceFormula, run: Run, time: B
   const equation = equationOf(source.expression);
   const variable = variableOf(request, equation, { ...source, unknown: unknown.value.kind === 'symbol' ? unknown.value.name : name });
   if (!variable.ok) return variable;
-  const near = request.near === undefined ? null : readPoint(request.near);
+  const told = targetOf(source.conditions, unknown.value);
+  const near = request.near === undefined ? (told ? success(pointOf(told)) : null) : readPoint(request.near);
   if (near && !near.ok) return near;
   const assumptions = readAllAssumptions(request.assume);
   if (!assumptions.ok) return assumptions;

@@ -5,6 +5,7 @@ import type { ExpandRequest, Side } from '../protocol.ts';
 import { principalSide, readExact } from '../read/index.ts';
 import { toLatex } from '../write/index.ts';
 import { readAllAssumptions } from './assumptions.ts';
+import { statedConditions, withValues } from './conditions.ts';
 import { candidatesOf, type SourceFormula } from './source.ts';
 
 export type Point = Expression | 'inf' | '-inf';
@@ -14,6 +15,8 @@ export interface Question {
   readonly point: Point;
   readonly side: Side;
   readonly assumptions: readonly Assumption[];
+  /** Conditions of the text that were used, in plain notation. */
+  readonly stated: readonly string[];
 }
 
 /** `0`, `inf`, `-inf` or an exact expression in plain or LaTeX notation. */
@@ -25,7 +28,7 @@ export function readPoint(text: string): Outcome<Point> {
   return read.ok ? success(pointOf(read.value)) : failure('bad-request', `The point "${text}" cannot be read: ${read.error.message}`);
 }
 
-function pointOf(e: Expression): Point {
+export function pointOf(e: Expression): Point {
   if (e.kind === 'constant' && e.name === 'infinity') return 'inf';
   if (e.kind === 'negation' && e.operand.kind === 'constant' && e.operand.name === 'infinity') return '-inf';
   return e;
@@ -79,5 +82,12 @@ export function questionOf(request: ExpandRequest, source: SourceFormula): Outco
   if (!variable.ok) return variable;
   const assumptions = readAllAssumptions(request.assume);
   if (!assumptions.ok) return assumptions;
-  return success({ function: target, ...variable.value, side: request.side ?? 'both', assumptions: assumptions.value });
+  const stated = statedConditions(source.conditions, variable.value.variable);
+  return success({
+    function: withValues(target, stated),
+    ...variable.value,
+    side: request.side ?? 'both',
+    assumptions: [...assumptions.value, ...stated.assumptions],
+    stated: stated.used,
+  });
 }

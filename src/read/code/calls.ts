@@ -186,3 +186,11 @@ export function isLibraryCall(code: CallCode, env: Environment): boolean {
   }
   return code.callee.kind === 'member' && env.language.methods && known(code.callee.name, code.args.length + 1);
 }
+
+/** `np.where`, `ifelse`, `merge`: calls whose arguments are branches. */
+export function isChoiceCall(code: CallCode, env: Environment): boolean {
+  const name = segments(code.callee)?.at(-1) ?? '';
+  const plain = env.language.foldCase ? name.toLowerCase() : name;
+  const what = Object.hasOwn(env.language.arithmetic, plain) ? env.language.arithmetic[plain] : undefined;
+  return what === 'choose' || what === 'merge';
+}

@@ -59,7 +59,8 @@ function contentOf(text: string, comment: CommentCode): readonly Part[] {
     const head = open.exec(written);
     if (!head) continue;
     const closed = written.length >= head[0].length + close.length && written.endsWith(close);
-    return lines(text, comment.start + head[0].length, comment.end - (closed ? close.length : 0)).map((part, i) => {
+    return lines(text, comment.start + head[0].length, comment.end - (closed ? close.length : 0)).map((part, i, all) => {
+      if (i > 0 && i === all.length - 1 && /^[ \t]*$/.test(text.slice(part.from, part.to))) return { from: part.to, to: part.to };
       const star = i > 0 && close === '*/' ? /^[ \t]*\*(?!\*)[ \t]?/.exec(text.slice(part.from, part.to)) : null;
       return star ? { from: part.from + star[0].length, to: part.to } : part;
     });

@@ -47,6 +47,12 @@ export function readLiteral(written: string, language: CodeLanguage): Literal | 
     const value = match?.[1] === undefined ? null : digits(match[1], radix);
     return value === null || (match?.[2] !== undefined && !INTEGER_SUFFIX.test(match[2])) ? null : { value: Q.rational(value), integer: true, format: null, imaginary: false };
   }
+  // Julia marks a Float32 by f in the place of e.
+  const single = language.family === 'julia' ? /^([\d.]+)f([+-]?\d+)$/.exec(text) : null;
+  if (single) {
+    const value = Q.fromDecimal(`${single[1]}e${single[2]}`);
+    return value ? { value, integer: false, format: 'binary32', imaginary: false } : null;
+  }
   const match = /^(\d*)(?:(\.)(\d*))?(?:([edq])([+-]?\d+))?_?([a-z]\w*)?$/i.exec(text);
   if (!match) return null;
   const [, whole = '', dot, fraction = '', letter, exponent, suffixText = ''] = match;

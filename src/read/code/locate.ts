@@ -1,7 +1,7 @@
 /** Which expression is meant: exactly the selection, or the largest arithmetic one around the cursor that is worth expanding. */
 import { type Expression, Q, walk } from '../../expression/index.ts';
 import { attempt, failure, type Outcome, success } from '../../outcome.ts';
-import { isLibraryCall } from './calls.ts';
+import { isChoiceCall, isLibraryCall } from './calls.ts';
 import type { Environment, Meaning } from './environment.ts';
 import { readMeaning } from './meaning.ts';
 import { isComparison, operatorMeaning } from './operators.ts';
@@ -96,8 +96,8 @@ export function expressionAtCursor(root: Code, offset: number, env: Environment,
     const code = path[i];
     if (!code || !isArithmetic(code, env)) break;
     const child = path[i + 1];
-    // An argument of an unknown function ends the climb, its callee does not.
-    if (code.kind === 'call' && child && child !== code.callee && !isLibraryCall(code, env)) break;
+    // An argument of an unknown function, or a branch of a choice, ends the climb; a callee does not.
+    if (code.kind === 'call' && child && child !== code.callee && (!isLibraryCall(code, env) || isChoiceCall(code, env))) break;
     if (code.kind === 'index' && child && child !== code.object) break;
     const inside = candidates[candidates.length - 1];
     if (inside && sameChain(code, inside, env)) candidates.pop();

@@ -1,6 +1,6 @@
 /** Reading of expressions from source code: one object that owns the loaded grammars. */
 import type { Expression, Span } from '../../expression/index.ts';
-import { attempt, failure, type Outcome, success } from '../../outcome.ts';
+import { attempt, Declined, failure, type Outcome, success } from '../../outcome.ts';
 import { parseFragment, parseProgram } from './document.ts';
 import type { Environment, Meaning, Remark } from './environment.ts';
 import { type GrammarHost, GrammarStore } from './grammar/loader.ts';
@@ -11,7 +11,7 @@ import { type CodeLanguage, codeLanguage, type CommentStyle, type FloatFormat } 
 import { expressionAtCursor, nodeExactly, valueOf } from './locate.ts';
 import { readMeaning } from './meaning.ts';
 import { constantsOf, declarationsOf, environmentAt, type NearbyConstant, type Scope, scopeAt } from './scope.ts';
-import { type Code, partsOf, pathTo, type Program, walkWithin } from './syntax.ts';
+import { type Code, partsOf, pathTo, type Program, walkCode, walkWithin } from './syntax.ts';
 import type { FormatEvidence, ValueType } from './types.ts';
 
 export interface FoundFormat {
@@ -101,14 +101,14 @@ export class CodeReader {
     const node = nodeExactly(program.root, start, end);
     const value = node ? valueOf(node) : null;
     if (value) {
-      const read = attempt(() => readMeaning(value, context.environment));
+      const read = attempt(() => readWhole(value, context));
       if (read.ok) return success(this.#reading(value, read.value, true, text, table.value, context));
       return read;
     }
     const fragment = parseFragment(text, start, end, table.value, this.#store);
     const alone = fragment ? valueOf(fragment.root) : null;
     if (!alone) return failure('unreadable', 'The selected code is no expression; select one.', { start, end });
-    const read = attempt(() => readMeaning(alone, context.environment));
+    const read = attempt(() => readWhole(alone, context));
     return read.ok ? success(this.#reading(alone, read.value, isRun(program.root, start, end), text, table.value, context)) : read;
   }
 
@@ -120,10 +120,10 @@ export class CodeReader {
     const { start, end } = trimmed(text, { start: 0, end: text.length });
     const program = parseProgram(text, table.value, this.#store, null);
     const whole = valueOf(program.root);
-    const value = whole?.kind === 'opaque' && partsOf(whole).length > 0 ? null : whole;
+    const value = whole?.kind === 'opaque' && [...walkCode(whole)].some((code) => code.kind === 'function' || code.kind === 'return') ? null : whole;
     const context = this.#context(program, text, table.value, value?.start ?? start, value?.end ?? end);
     if (!value) return this.#followed(program, text, table.value, start, end);
-    const read = attempt(() => readMeaning(value, context.environment));
+    const read = attempt(() => readWhole(value, context));
     return read.ok ? success(this.#reading(value, read.value, true, text, table.value, context)) : read;
   }
 
@@ -210,6 +210,14 @@ interface Context {
   readonly scope: Scope;
   readonly environment: Environment;
   readonly remarks: Remark[];
+}
+
+/** An expression of integer literals alone whose quotient the surroundings would decide has no value of its own, unless it goes to a declared float. */
+function readWhole(code: Code, { environment, scope }: Context): Meaning {
+  const meaning = readMeaning(code, environment);
+  const goal = scope.target === null ? null : environment.typeOf(scope.target);
+  if (meaning.type.pending && goal?.kind !== 'float') throw new Declined('bad-request', 'Only integer literals are divided here, and the type around them decides whether the fraction is dropped; make one of them a floating-point number.', { start: code.start, end: code.end });
+  return meaning;
 }
 
 /** The selection without white space around it, and without a closing semicolon. */

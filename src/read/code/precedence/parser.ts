@@ -442,6 +442,10 @@ export class Parser {
   }
 
   #symbol(token: Token): Code {
+    if (/^\.(?:true|false)\.$/i.test(token.text)) {
+      this.next();
+      return { kind: 'name', text: token.text, start: token.start, end: token.end };
+    }
     if (/^[√∛]$/.test(token.text)) {
       this.next();
       const operand = this.postfix();

@@ -124,6 +124,9 @@ export function tokenize(text: string, language: CodeLanguage, start: number, en
     const afterValue = !spaced && (previous?.kind === 'name' || previous?.kind === 'number' || previous?.kind === 'close' || previous?.text === "'");
     const joined = c === '&' || c === '.' || c === '\\' ? continuationEnd(text, at, end, language) : -1;
     if (joined > at) {
+      if (language.family === 'fortran') {
+        for (const found of text.slice(at, joined).matchAll(/![^\n\r]*/g)) comments.push({ start: at + found.index, end: at + found.index + found[0].length, doc: false });
+      }
       at = joined;
       spaced = true;
       continue;

@@ -232,6 +232,32 @@ export function derivative(p: State): Expression | null {
   return value;
 }
 
+/** What is differentiated is a function of the variables: `\frac{dy}{dt}` is y'(t), not the derivative of a constant. */
+function asFunctionOf(operand: Expression, variables: readonly Expression[]): Expression {
+  if (operand.kind !== 'symbol' || variables.some((v) => v.kind === 'symbol' && v.name === operand.name)) return operand;
+  return { kind: 'apply', name: operand.name, args: variables, derivatives: variables.map(() => 0), span: operand.span };
+}
+
+/** `\dv{f}{x}`, `\dv[2]{f}{x}`, `\dv{x} f`: a widespread package's short forms of derivatives. */
+export function shortDerivative(p: State): Expression {
+  const from = p.at;
+  const sign = next(p);
+  let times = 1;
+  if (isMark(peek(p), '[')) {
+    const close = p.match[p.at] ?? -1;
+    const digits = p.tokens.slice(p.at + 1, close).map((t) => t.text).join('');
+    if (!/^[1-9]\d?$/.test(digits)) fail(p, 'A derivative of symbolic order is not read; write a number for the order.', sign);
+    times = Number(digits);
+    p.at = close + 1;
+  }
+  const first = p.grammar.texArgument(p);
+  const second = peek(p).kind === 'open' ? p.grammar.texArgument(p) : null;
+  const variable = second ?? first;
+  if (variable.kind !== 'symbol') return fail(p, 'The variable of this derivative is not a single symbol; write it as \\frac{d}{dx}.', sign);
+  const body = second ? first : isMark(peek(p), '(', '[', '\\{') ? p.grammar.factor(p) : p.grammar.factorRun(p);
+  return node(p, from, { kind: 'derivative', body: asFunctionOf(body, [variable]), variable, times });
+}
+
 /** A name with its subscript, exponents left alone. */
 function nameOnly(p: State): Expression {
   const from = p.at;

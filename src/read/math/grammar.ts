@@ -39,6 +39,10 @@ export function relation(p: State): Expression {
     if (kind === null) break;
     if (sides.length === 0) fail(p, `There is nothing before ${named(sign)}; add the left side.`);
     next(p);
+    if (sign.text === 'xrightarrow') {
+      if (isMark(peek(p), '[')) p.at = (p.match[p.at] ?? p.at) + 1;
+      skipArgument(p);
+    }
     if (isMark(peek(p), '=') && (kind === 'about' || kind === 'tilde')) next(p);
     if (isMark(peek(p), '_', '^') && kind === 'to') {
       next(p);

@@ -29,11 +29,11 @@ interface Source {
 
 const MAX_EXPANSION = 60;
 /** Commands without meaning for the mathematics. */
-const IGNORED = new Set('displaystyle textstyle scriptstyle scriptscriptstyle limits nolimits nonumber notag allowbreak nobreak break strut mathstrut null relax bf it rm sf tt cal scr centering hfill tiny small normalsize large Large smash boldmath protect phantomsection smallskip medskip bigskip noindent par left right middle big Big bigg Bigg bigl Bigl biggl Biggl bigr Bigr biggr Biggr bigm Bigm biggm Biggm begingroup endgroup bgroup egroup ensuremath'.split(' '));
+const IGNORED = new Set('displaystyle textstyle scriptstyle scriptscriptstyle limits nolimits nonumber notag allowbreak nobreak break strut mathstrut null relax bf it rm sf tt cal scr centering hfill tiny small normalsize large Large smash boldmath protect phantomsection smallskip medskip bigskip noindent par left right middle big Big bigg Bigg bigl Bigl biggl Biggl bigr Bigr biggr Biggr bigm Bigm biggm Biggm begingroup endgroup bgroup egroup ensuremath qty'.split(' '));
 /** Commands that are ignored together with one braced argument. */
 const IGNORED_WITH_ARGUMENT = new Set('label tag color hspace vspace mspace phantom hphantom vphantom ref eqref cite footnote mathchoice colorbox setcounter kern mkern hskip mskip index gls href url'.split(' '));
 /** Commands whose argument is simply read. */
-const TRANSPARENT = new Set('mathord mathop mathbin mathrel mathopen mathclose mathpunct mathinner boxed fbox cancel bcancel xcancel underline overline underbrace overbrace mathnormal mathit'.split(' '));
+const TRANSPARENT = new Set('mathord mathop mathbin mathrel mathopen mathclose mathpunct mathinner boxed fbox cancel bcancel xcancel underline overline mathnormal mathit'.split(' '));
 const SPACES = new Set([',', ';', ':', '>', ' ', 'quad', 'qquad', 'enspace', 'enskip', 'thinspace', 'medspace', 'thickspace', 'hfil', 'hfill']);
 const TEXTS = new Set('text textrm textnormal textit textbf textsf texttt mbox hbox intertext shortintertext emph textup'.split(' '));
 const NAMES = new Set('operatorname mathrm mathsf mathtt operatornamewithlimits mathup symup upright'.split(' '));
@@ -122,6 +122,11 @@ export function lex(text: string, options: LexOptions): Token[] {
         const given = source.args[Number(body.charAt(i + 1)) - 1];
         if (given) lexSource(given);
         i += 2;
+      } else if (c === '{' && body.charAt(i + 1) === '\\') {
+        const name = fontSwitch(i);
+        if (name) push('word', name[1] ?? '', i, i + name[0].length, { upright: true });
+        else push('open', c, i, i + 1);
+        i += name?.[0].length ?? 1;
       } else if (c === '{' || c === '}') {
         push(c === '{' ? 'open' : 'close', c, i, i + 1);
         i += 1;
@@ -137,6 +142,11 @@ export function lex(text: string, options: LexOptions): Token[] {
       } else {
         i = character(i);
       }
+    }
+
+    /** `{\rm d}`, `{\cal O}`: an old font switch around one name. */
+    function fontSwitch(at: number): RegExpExecArray | null {
+      return /^\{\\(?:rm|sf|it|cal|mathrm|tt)\s+([A-Za-z]+)\s*\}/.exec(body.slice(at, Math.min(source.to, at + 40)));
     }
 
     function character(at: number): number {
@@ -262,6 +272,25 @@ export function lex(text: string, options: LexOptions): Token[] {
         if (!base) return behind;
         lexSource(base);
         return after(base, behind);
+      }
+      if (name === 'underbrace' || name === 'overbrace') {
+        const given = argument(end);
+        if (!given) return end;
+        const close = after(given, end);
+        push('open', '{', at, end);
+        lexSource(given);
+        push('close', '}', close - 1, close);
+        // The words at the brace are for people.
+        const sign = blank(close);
+        const words = body.charAt(sign) === '_' || body.charAt(sign) === '^' ? argument(sign + 1) : null;
+        return words ? after(words, sign + 1) : close;
+      }
+      if (name === 'dd' || name === 'dif' || name === 'diff' || name === 'differential') {
+        push('word', 'd', at, end, { upright: true });
+        const given = body.charAt(blank(end)) === '{' ? argument(end) : null;
+        if (!given) return end;
+        lexSource(given);
+        return after(given, end);
       }
       if (TRANSPARENT.has(name)) return end;
       push('command', name, at, end);

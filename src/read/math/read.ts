@@ -1,7 +1,8 @@
 /** The door of the formula reader: text in, one formula with its trailing conditions out. */
 import type { Expression } from '../../expression/index.ts';
 import { failure, type Outcome, success } from '../../outcome.ts';
-import { atom, infix, startsFactor, texArgument } from './atoms.ts';
+import { atom, startsFactor, texArgument } from './atoms.ts';
+import { infix } from './brackets.ts';
 import { gatherFacts, type NameFacts } from './facts.ts';
 import { factor, factorRun, isCondition, relation, sum, term } from './grammar.ts';
 import { lex } from './lexer.ts';
@@ -107,7 +108,7 @@ function stateOf(text: string, notation: 'latex' | 'plain', options: ReadOptions
 }
 
 const isSeparator = (t: Token): boolean =>
-  t.kind === 'space' || t.kind === 'text' || isMark(t, ',', ';', '.', ':', '\\\\', '=>', '!', '?', '"', '\\}') || isCommand(t, 'implies', 'iff', 'Rightarrow', 'Leftrightarrow', 'Longrightarrow', 'therefore', 'because', 'quad', 'qquad', 'hline', 'newline', 'cr', 'forall', 'colon', 'semicolon', 'qedhere', 'square', 'Leftarrow', 'where');
+  t.kind === 'space' || t.kind === 'text' || isMark(t, ',', ';', '.', ':', '\\\\', '=>', '!', '?', '"', '\\}', '，', '。', '；', '、', '：') || isCommand(t, 'implies', 'iff', 'Rightarrow', 'Leftrightarrow', 'Longrightarrow', 'therefore', 'because', 'quad', 'qquad', 'hline', 'newline', 'cr', 'forall', 'colon', 'semicolon', 'qedhere', 'square', 'Leftarrow', 'where');
 
 /** `.5` at the start is a number, not punctuation. */
 const startsNumber = (p: State): boolean => isMark(peek(p), '.') && peek(p, 1).kind === 'digit' && !peek(p, 1).spaced;

@@ -77,10 +77,11 @@ export const toSet = <T>(kit: Kit<T>, p: Parameter<T>): T => (isRational(p) ? ki
 
 /** The rational that an exact real ball of moderate length is; null for wide or long ones. */
 export function exactRational(x: Ball): Rational | null {
-  if (x.rad !== 0n || x.exp > 200 || x.exp < -200) return null;
+  if (x.rad !== 0n || x.exp > 200 || x.exp < -20_000) return null;
   const value = real.lower(x);
-  return value;
+  return value.den < LARGEST_PARAMETER && value.num < LARGEST_PARAMETER && value.num > -LARGEST_PARAMETER ? value : null;
 }
+const LARGEST_PARAMETER = 1n << 256n;
 /** The integer that a ball is exactly; null otherwise. */
 export function exactInteger(x: Ball, limit = 1_000_000): number | null {
   const value = exactRational(x);

@@ -30,7 +30,7 @@ function adaptive<T>(attempt: (bits: number) => T | null, accuracy: (value: T) =
   for (let round = 0; round < 12 && bits <= Math.min(MOST_BITS, 40 * (precision + 64)); round++) {
     const value = attempt(bits);
     if (value === null) {
-      if (limit < Infinity && round >= 1) return best;
+      if (round >= (limit < Infinity ? 1 : 2)) return best;
       bits = 2 * bits;
       continue;
     }

@@ -3,6 +3,8 @@ import { build, type Expression } from '../../expression/index.ts';
 import type { FunctionDescription } from '../description.ts';
 import { call, cos, exp, minus, neg, over, plus, pow, sin, sqrt, square, times } from '../compose.ts';
 import { names, subscripted } from '../naming.ts';
+import { enclosed } from '../enclosure/wrap.ts';
+import { hypergeometricAlgorithms } from './enclosure.ts';
 import { kummerUDerivative, kummerUEquation, kummerULocal, parabolicDerivative, parabolicEquation, parabolicLocal, parabolicValue } from './confluent.ts';
 import { hypergeometricDerivative, hypergeometricEquation, hypergeometricLocal, hypergeometricValue } from './generalized.ts';
 import { chebyshevTValue, chebyshevUValue, hermiteValue, laguerreValue, legendreValue } from './polynomials.ts';
@@ -22,7 +24,7 @@ const split = (args: readonly string[]): { p: string; q: string; a: readonly str
 const degree = (letter: string, mpmath: string, code: readonly [string, string, string?]): ReturnType<typeof names> =>
   names({ latex: [], latexLetters: [letter], latexIndices: { count: 1, place: 'subscript' }, latexForm: subscripted(letter), unicodeForm: ([n = '', x = '']) => `${letter}_${n}(${x})`, mpmath, code: { python: [code[0], mpmath], matlab: code[1], ...(code[2] ? { cpp: code[2] } : {}) } });
 
-export const hypergeometricFunctions: readonly FunctionDescription[] = [
+const descriptions: readonly FunctionDescription[] = [
   {
     id: 'hypergeometric',
     title: 'generalised hypergeometric function pFq; arguments p, q, a_1..a_p, b_1..b_q, x',
@@ -61,3 +63,5 @@ export const hypergeometricFunctions: readonly FunctionDescription[] = [
   { id: 'hermiteH', title: 'Hermite function H_n(x)', arity: 2, value: hermiteValue, definition: ([n = number(0), x = number(0)]) => times(pow(2, over(n, 2)), exp(over(square(x), 2)), call('parabolicD', n, times(sqrt(2), x))), derivative: ([n = number(0), x = number(0)], index) => (index === 1 ? times(2, n, call('hermiteH', plus(n, -1), x)) : null), names: degree('H', 'hermite', ['eval_hermite', 'hermiteH', 'hermite']), source: 'DLMF 18.5' },
   { id: 'laguerreL', title: 'Laguerre function L_n(x)', arity: 2, value: laguerreValue, definition: ([n = number(0), x = number(0)]) => call('hypergeometric', 1, 1, neg(n), 1, x), names: names({ latex: [], latexLetters: ['L'], latexIndices: { count: 1, place: 'subscript' }, latexForm: subscripted('L'), unicodeForm: ([n = '', x = '']) => `L_${n}(${x})`, mpmath: ([n = '', x = '']) => `laguerre(${n},0,${x})`, code: { python: 'eval_laguerre', matlab: 'laguerreL', cpp: 'laguerre' } }), source: 'DLMF 18.5' },
 ];
+
+export const hypergeometricFunctions = enclosed(descriptions, hypergeometricAlgorithms);

@@ -1,11 +1,12 @@
 /** Models of f, of the sum and of the remainder on a segment. */
-import { build, type Expression, Q, type Rational, substitute } from '../expression/index.ts';
+import { build, dependsOn, type Expression, Q, type Rational, substitute } from '../expression/index.ts';
 import { type Expansion, partialSum } from '../expand/index.ts';
 import { describe } from '../functions/index.ts';
 import { Declined } from '../outcome.ts';
 import { type LogModel, logModelOfTree, type Model, type ModelArithmetic, modelArithmetic, rationalOf } from '../rigorous/index.ts';
 import type { Numbers } from './numbers.ts';
 import { isExactlyZero, type Segment } from './region.ts';
+import { specialModel } from './special.ts';
 
 /** A model in s on a sub-interval of its unit domain. */
 export interface Local<T> {
@@ -36,7 +37,8 @@ export function modelOf<T>(e: Expression, n: Numbers<T>, m: ModelArithmetic<T>, 
 export function logModelOf<T>(e: Expression, n: Numbers<T>, m: ModelArithmetic<T>, variable: string, leaf: Model<T>, vanishes?: (e: Expression) => boolean, check?: () => void): LogModel<T> | null {
   const environment = new Map([...parameterModels(n, m), [variable, leaf] as const]);
   if (environment.size > PARAMETER_LIMIT) return null;
-  return logModelOfTree(e, { m, trees: n.trees, real: n.r, describe, environment, vanishes, check });
+  const varying = (tree: Expression): boolean => dependsOn(tree, variable);
+  return logModelOfTree(e, { m, trees: n.trees, real: n.r, describe, environment, vanishes, check, call: (id, args, models) => specialModel(id, args, models, n, m, (tree) => !varying(tree)) });
 }
 
 /** The least q that makes every power of the expansion a whole multiple of 1/q; null where a power is not a rational number. */

@@ -23,6 +23,8 @@ export interface ModelTreeContext<T> {
   /** A model of a call that is not elementary and has no definition, from its argument models: supplied by the room that knows the function. */
   readonly call?: (id: string, args: readonly Expression[], models: readonly Model<T>[]) => Model<T> | null;
   readonly check?: () => void;
+  /** Functions being modelled through their derivatives, to end circles. */
+  readonly deriving?: ReadonlySet<string>;
 }
 
 /** sum over j of (log s)^j times model j, on (0, 1]. */
@@ -185,7 +187,7 @@ export function logModelOfTree<T>(e: Expression, context: ModelTreeContext<T>): 
     const described = context.describe?.(id);
     if (id === 'atan2' && models[1]) return one(angle(first, models[1]));
     if (described?.definition) return visit(described.definition(args));
-    return one(context.call?.(id, args, models) ?? byDerivative(id, args, models, node));
+    return one(byDerivative(id, args, models, node) ?? context.call?.(id, args, models) ?? null);
   };
   const signOnDomain = (f: Model<T>): 1 | -1 | null => {
     const r = context.real;
@@ -226,26 +228,23 @@ export function logModelOfTree<T>(e: Expression, context: ModelTreeContext<T>): 
   };
 
   /** A function of one varying argument whose derivative can be modelled: f(u) = f(u(0)) + int f'(P) dP. */
-  const deriving = new Set<string>();
   const byDerivative = (id: string, args: readonly Expression[], models: readonly Model<T>[], node: Expression): Model<T> | null => {
     const description = context.describe?.(id);
     const index = models.findIndex((_, k) => !isConstant(args[k] ?? node));
     const varyingCount = args.filter((arg) => !isConstant(arg)).length;
     const argument = models[index];
-    if (!description?.derivative || varyingCount !== 1 || argument === undefined || deriving.has(id)) return null;
+    if (!description?.derivative || varyingCount !== 1 || argument === undefined || context.deriving?.has(id)) return null;
     const u = m.regular(argument);
     if (u === null) return null;
     const place = 'argument of the function';
     const slopeTree = description.derivative(args.map((arg, k) => (k === index ? build.symbol(place) : arg)), index);
     if (slopeTree === null) return null;
-    const inner = (argumentModel: Model<T>): Model<T> | null => modelOfTree(slopeTree, { ...context, environment: new Map([[place, argumentModel]]), vanishes: undefined, call: context.call });
-    deriving.add(id);
+    const inner = (argumentModel: Model<T>): Model<T> | null => modelOfTree(slopeTree, { ...context, environment: new Map([[place, argumentModel]]), vanishes: undefined, deriving: new Set([...(context.deriving ?? []), id]) });
     const constants = args.map((arg, k) => (k === index ? (u.coefficients[0] ?? a.zero) : evaluateTree(arg, new Map(), trees, context.describe)));
     const complete = constants.flatMap((c) => (c === null ? [] : [c]));
     const start = complete.length === constants.length ? valueAt(id, args, index, complete) : null;
     const slope = start === null || mentions(slopeTree, id) ? null : inner(m.polynomialPart(u));
     const whole = slope === null || a.isZero(u.tail) ? null : inner({ valuation: 0, coefficients: [a.union(u.range, m.polynomialPart(u).range)], tail: a.zero, range: a.union(u.range, m.polynomialPart(u).range) });
-    deriving.delete(id);
     return start === null || slope === null ? null : m.integrate(u, start, slope, whole && m.rangeOf(whole));
   };
   const valueAt = (id: string, args: readonly Expression[], index: number, values: readonly T[]): T | null => {

@@ -1,0 +1,287 @@
+/**
+ * Local models of special functions at regular points: f(u) = sum a_k d^k, d = u - u(0).
+ * The coefficients come from Cauchy's integral by the trapezoidal rule on |d| = R/2, whose error is B 2^-M/(1 - 2^-M) per (R/2)^k for M points and B = max |f| on |d| = R
+ * (Trefethen & Weideman, SIAM Rev. 56 (2014), theorem 2.1); the rest of the series is at most B (D/R)^K/(1 - D/R) on |d| <= D. Both need f analytic on |d| <= R:
+ * the list below says where each function is, from its definition.
+ */
+import { build, type Expression } from '../expression/index.ts';
+import { describe } from '../functions/index.ts';
+import { type Ball, complex, type ComplexBall, enclose, interval, type Model, type ModelArithmetic, real } from '../rigorous/index.ts';
+import type { Numbers } from './numbers.ts';
+
+/** Where f is analytic in its varying argument: everywhere, off (-inf, end], or off [end, inf). */
+type Domain = { readonly kind: 'entire' } | { readonly kind: 'offLeft'; readonly end: number } | { readonly kind: 'offRight'; readonly end: number } | { readonly kind: 'offPoint'; readonly end: number };
+const entire: Domain = { kind: 'entire' };
+const offLeft = (end: number): Domain => ({ kind: 'offLeft', end });
+const offRight = (end: number): Domain => ({ kind: 'offRight', end });
+
+const isInteger = (e: Expression | undefined): boolean => e !== undefined && (e.kind === 'number' ? e.value.den === 1n : e.kind === 'negation' && isInteger(e.operand));
+
+function domainOf(id: string, args: readonly Expression[], index: number): Domain | null {
+  switch (id) {
+    case 'erf':
+    case 'erfc':
+    case 'erfi':
+    case 'dawson':
+    case 'fresnelS':
+    case 'fresnelC':
+    case 'sinIntegral':
+    case 'cin':
+    case 'ein':
+    case 'sinhIntegral':
+    case 'airyAi':
+    case 'airyBi':
+    case 'airyAiPrime':
+    case 'airyBiPrime':
+      return entire;
+    case 'gamma':
+    case 'logGamma':
+    case 'digamma':
+    case 'cosIntegral':
+    case 'coshIntegral':
+    case 'expIntegralEi':
+      return offLeft(0);
+    case 'polygamma':
+    case 'expIntegralE':
+    case 'besselY':
+    case 'besselK':
+      return index === 1 ? offLeft(0) : null;
+    case 'besselJ':
+    case 'besselI':
+      return index === 1 ? (isInteger(args[0]) ? entire : offLeft(0)) : null;
+    case 'struveH':
+    case 'struveL':
+      return index === 1 ? offLeft(0) : null;
+    case 'kummerU':
+      return index === 2 ? offLeft(0) : null;
+    case 'lambertW':
+      // Slightly right of -1/e.
+      return index === 1 && args[0]?.kind === 'number' && args[0].value.num === 0n ? offLeft(-0.36787) : null;
+    case 'zeta':
+      return { kind: 'offPoint', end: 1 };
+    case 'hurwitzZeta':
+      return index === 1 ? offLeft(0) : null;
+    case 'polylog':
+      return index === 1 ? offRight(1) : null;
+    case 'ellipticKParameter':
+    case 'ellipticEParameter':
+      return offRight(1);
+    default:
+      return null;
+  }
+}
+
+interface Series {
+  readonly radius: number;
+  readonly coefficients: readonly Ball[];
+  /** max |f| on the circle of that radius. */
+  readonly bound: Ball;
+}
+
+const cache = new Map<string, Series | null>();
+const CACHE_SIZE = 256;
+
+/** Room between u0 and the nearest singularity that the list allows, as a double rounded down. */
+function roomOf(domain: Domain, centre: number): number {
+  switch (domain.kind) {
+    case 'entire':
+      return Infinity;
+    case 'offLeft':
+      return (centre - domain.end) * (1 - 1e-9);
+    case 'offRight':
+      return (domain.end - centre) * (1 - 1e-9);
+    case 'offPoint':
+      return Math.abs(centre - domain.end) * (1 - 1e-9);
+  }
+}
+
+/** The model of a described function of one varying argument at a regular point; null where its singularities are too near, or nothing is known of them. */
+export function specialModel<T>(id: string, args: readonly Expression[], models: readonly Model<T>[], n: Numbers<T>, m: ModelArithmetic<T>, isConstant: (e: Expression) => boolean): Model<T> | null {
+  const { r } = n;
+  const index = args.findIndex((arg) => !isConstant(arg));
+  const argument = models[index];
+  if (argument === undefined || args.filter((arg) => !isConstant(arg)).length !== 1) return null;
+  const shifted = shiftedGamma(id, args, models, index, n, m, isConstant);
+  if (shifted !== null) return shifted;
+  const domain = domainOf(id, args, index);
+  const u = m.regular(argument);
+  if (domain === null || u === null || !describe(id)?.enclose) return null;
+  const centre = u.coefficients[0] ?? r.zero;
+  const ball = n.toBall(centre);
+  const parameters: ComplexBall[] = [];
+  for (const [k, arg] of args.entries()) {
+    if (k === index) continue;
+    const value = enclose(arg, new Map([...n.parameters].flatMap(([name, set]) => (n.toBall(set) ? [[name, complex.fromReal(n.toBall(set) ?? real.ZERO)] as const] : []))), 128, describe);
+    if (value === null) return null;
+    parameters.push(value);
+  }
+  if (ball === null) return null;
+  const offset = withoutConstant(m, u);
+  const spread = m.rangeOf(offset);
+  if (spread === null) return null;
+  const reach = n.toBall(r.upperEnd(r.absolute(spread)));
+  if (reach === null) return null;
+  const D = up(real.toDouble(real.upperEnd(reach)));
+  if (D === 0) {
+    const value = n.value(build.call(id, ...args.map((arg, k) => (k === index ? build.symbol('argument') : arg))), new Map([['argument', centre]]));
+    return value === null ? null : m.constant(value);
+  }
+  const room = roomOf(domain, real.toDouble(ball));
+  const precision = n.precision <= 53 ? 64 : n.precision;
+  for (const factor of [4, 2.5, 1.6, 1.25]) {
+    const radius = Math.min(domain.kind === 'entire' ? Math.max(factor * D, 0.5) : Math.max(factor * D, Math.min(0.5 * room, 4)), 0.97 * room);
+    if (!(radius > 1.1 * D)) continue;
+    const series = seriesOf(id, parameters, index, ball, radius, precision, m.length);
+    if (series === null) continue;
+    return composed(series, offset, D, n, m);
+  }
+  return null;
+}
+
+const up = (x: number): number => interval.up(x);
+
+function withoutConstant<T>(m: ModelArithmetic<T>, u: Model<T>): Model<T> {
+  const rest = m.polynomial([m.a.zero, ...u.coefficients.slice(1)]);
+  return m.a.isZero(u.tail) ? rest : m.add(rest, { valuation: u.coefficients.length, coefficients: [], tail: u.tail, range: u.tail });
+}
+
+/** Horner's rule in the offset, with the rest of the series as a tail of its K-th power. */
+function composed<T>(series: Series, offset: Model<T>, D: number, n: Numbers<T>, m: ModelArithmetic<T>): Model<T> | null {
+  const { r } = n;
+  const K = series.coefficients.length;
+  const ratio = real.divide(real.fromDouble(D), real.fromDouble(series.radius), 60);
+  const gap = ratio && real.lowerEnd(real.subtract(real.ONE, ratio, 60));
+  const power = real.powerInteger(real.fromDouble(series.radius), K, 60);
+  const size = gap && power && real.divide(series.bound, real.multiply(gap, power, 60), 60);
+  if (!size || !real.isNonNegative(size)) return null;
+  const factor = n.fromBall(real.upperEnd(size));
+  const unit = r.union(r.negate(r.one), r.one);
+  const last = m.powerInteger({ valuation: offset.valuation, coefficients: [], tail: offset.range, range: offset.range }, K);
+  if (last === null) return null;
+  const tail = r.multiply(last.range, r.multiply(factor, unit));
+  let value: Model<T> = { valuation: offset.valuation * K, coefficients: [], tail, range: tail };
+  let sum: Model<T> | null = null;
+  for (let k = K - 1; k >= 0; k -= 1) {
+    const constant = m.constant(n.fromBall(series.coefficients[k] ?? real.ZERO));
+    sum = sum === null ? constant : m.add(constant, m.multiply(sum, offset));
+  }
+  if (sum === null) return null;
+  value = m.add(sum, value);
+  return value;
+}
+
+function seriesOf(id: string, parameters: readonly ComplexBall[], index: number, centre: Ball, radius: number, precision: number, length: number): Series | null {
+  const key = `${id}|${index}|${parameters.map((z) => `${z.re.mid},${z.re.rad},${z.re.exp},${z.im.mid}`).join(';')}|${centre.mid},${centre.rad},${centre.exp}|${radius}|${precision}`;
+  const known = cache.get(key);
+  if (known !== undefined && (known === null || known.coefficients.length >= length)) return known && { ...known, coefficients: known.coefficients.slice(0, length) };
+  const made = computeSeries(id, parameters, index, centre, radius, precision, length);
+  if (cache.size >= CACHE_SIZE) cache.clear();
+  cache.set(key, made);
+  return made;
+}
+
+function computeSeries(id: string, parameters: readonly ComplexBall[], index: number, centre: Ball, radius: number, precision: number, length: number): Series | null {
+  const f = describe(id)?.enclose;
+  if (!f) return null;
+  const at = (z: ComplexBall, bits: number): ComplexBall | null => {
+    const args = [...parameters];
+    args.splice(index, 0, z);
+    return f(args, bits);
+  };
+  const bound = maximumOnCircle(at, centre, radius);
+  if (bound === null) return null;
+  // M points on half the radius; f is real on the real axis, so the lower half mirrors the upper.
+  const half = Math.ceil((precision + 12) / 2);
+  const M = 2 * half;
+  const work = precision + 16;
+  const c = complex.arithmetic(work);
+  const inner = real.fromDouble(radius / 2);
+  const values: ComplexBall[] = [];
+  const roots: ComplexBall[] = [];
+  const pi = real.pi(work);
+  for (let j = 0; j < M; j += 1) {
+    const angle = real.divide(real.multiply(real.scaleByPowerOfTwo(pi, 1), real.fromInteger(j), work), real.fromInteger(M), work) ?? real.ZERO;
+    const [s, co] = j === 0 ? [real.ZERO, real.ONE] : j === half ? [real.ZERO, real.fromInteger(-1)] : real.sinCos(angle, work);
+    roots.push({ re: co, im: s });
+  }
+  for (let j = 0; j <= half; j += 1) {
+    const root = roots[j] ?? complex.ONE;
+    const z: ComplexBall = { re: real.add(centre, real.multiply(root.re, inner, work), work), im: real.multiply(root.im, inner, work) };
+    const value = at(z, work);
+    if (value === null) return null;
+    values.push(value);
+  }
+  const alias = real.scaleByPowerOfTwo(real.upperEnd(bound), 1 - M);
+  const coefficients: Ball[] = [];
+  let scale: Ball = real.ONE;
+  for (let k = 0; k < length; k += 1) {
+    // Re of sum over the upper half, ends once and inner points twice.
+    let sum = real.ZERO;
+    for (let j = 0; j <= half; j += 1) {
+      const root = roots[(j * k) % M] ?? complex.ONE;
+      const value = values[j] ?? complex.ZERO;
+      const part = c.real.add(c.real.multiply(value.re, root.re), c.real.multiply(value.im, root.im));
+      sum = c.real.add(sum, j === 0 || j === half ? part : real.scaleByPowerOfTwo(part, 1));
+    }
+    const mean = real.withRadius(c.real.divideInteger(sum, M), alias);
+    const coefficient = real.divide(mean, scale, work);
+    if (coefficient === null) return null;
+    coefficients.push(coefficient);
+    scale = real.multiply(scale, inner, work);
+  }
+  // f(u0) itself is known better directly.
+  const first = at(complex.fromReal(centre), work);
+  if (first !== null && coefficients[0]) coefficients[0] = real.intersection(first.re, coefficients[0], work) ?? first.re;
+  return { radius, coefficients, bound: real.upperEnd(bound) };
+}
+
+/** An upper bound of |f| on |z - centre| = radius by rectangles over arcs of the upper half. */
+function maximumOnCircle(at: (z: ComplexBall, bits: number) => ComplexBall | null, centre: Ball, radius: number): Ball | null {
+  for (const arcs of [12, 32, 96]) {
+    let largest: Ball | null = real.ZERO;
+    for (let j = 0; j < arcs && largest !== null; j += 1) {
+      const angles = interval.multiply(interval.PI, interval.fromEnds(j / arcs, (j + 1) / arcs));
+      const widened = interval.fromEnds(interval.down(angles.lo), interval.up(angles.hi));
+      const [s, c] = interval.sinCos(widened);
+      const size = interval.fromDouble(radius);
+      const [x, y] = [interval.toBall(interval.multiply(c, size)), interval.toBall(interval.multiply(s, size))];
+      const value: ComplexBall | null = x === null || y === null ? null : at({ re: real.add(centre, x, 64), im: y }, 64);
+      largest = value === null ? null : real.upperEnd(real.maximum(largest, complex.absolute(value, 64)));
+    }
+    if (largest !== null && real.exponentOf(largest) < 4000) return largest;
+  }
+  return null;
+}
+
+/** gamma(u) = gamma(u + k)/(u (u+1) ...), and the same for its logarithmic derivatives, until u + k is well to the right of the poles. */
+function shiftedGamma<T>(id: string, args: readonly Expression[], models: readonly Model<T>[], index: number, n: Numbers<T>, m: ModelArithmetic<T>, isConstant: (e: Expression) => boolean): Model<T> | null {
+  const { r } = n;
+  const u = models[index];
+  if (!['gamma', 'digamma', 'polygamma'].includes(id) || u === undefined || u.valuation < 0) return null;
+  const order = id === 'polygamma' ? args[0] : build.number(0);
+  if (index !== (id === 'polygamma' ? 1 : 0) || order?.kind !== 'number' || order.value.den !== 1n || order.value.num < 0n || order.value.num > 40n) return null;
+  const range = m.rangeOf(u);
+  if (range === null) return null;
+  const low = r.toDouble(r.lowerEnd(range));
+  const width = r.toDouble(r.upperEnd(range)) - low;
+  // Far enough from the poles that the disc needed is free of them.
+  const steps = Math.ceil(Math.max(1, 2 * width) - low);
+  if (!(steps > 0) || steps > 60) return null;
+  const moved = m.add(u, m.constant(r.fromInteger(steps)));
+  const far = specialModel(id, args, models.map((f, k) => (k === index ? moved : f)), n, m, isConstant);
+  if (far === null) return null;
+  let value: Model<T> | null = far;
+  for (let k = 0; k < steps && value !== null; k += 1) {
+    const factor = m.add(u, m.constant(r.fromInteger(k)));
+    if (id === 'gamma') value = m.divide(value, factor);
+    else {
+      // psi^(j)(x) = psi^(j)(x+1) - (-1)^j j!/x^(j+1).
+      const j = Number(order.value.num);
+      let factorial = r.one;
+      for (let i = 2; i <= j; i += 1) factorial = r.multiply(factorial, r.fromInteger(i));
+      const pole = m.powerInteger(factor, -(j + 1));
+      value = pole && m.subtract(value, m.scale(pole, j % 2 === 0 ? factorial : r.negate(factorial)));
+    }
+  }
+  return value;
+}

@@ -118,6 +118,9 @@ function levelOf(code: Code, outer: boolean): Level {
   const add = (d: Declaration): void => {
     if (d.name !== '') level.set(d.name, d);
   };
+  // Fortran: a function's result is a variable with the type of its head.
+  const result = code.kind === 'function' ? /^(.+)=(\w+)$/.exec(code.returns) : null;
+  if (result?.[1] !== undefined && result[2] !== undefined) add({ name: result[2], type: result[1], value: null, constant: false, kind: 'variable', span: { start: code.start, end: code.end }, outer: false });
   if (code.kind === 'function' || code.kind === 'lambda') for (const p of code.parameters) add({ name: p.name, type: p.type, value: null, constant: false, kind: 'parameter', span: { start: p.start, end: p.end }, outer: false });
   else if (code.kind === 'block' || code.kind === 'opaque') for (const inner of directly(code)) for (const d of declarationOf(inner, outer)) add(d);
   else for (const d of declarationOf(code, outer)) add(d);

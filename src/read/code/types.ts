@@ -45,7 +45,8 @@ const declared = new WeakMap<CodeLanguage, Map<string, ValueType>>();
 
 function typeOfText(text: string, language: CodeLanguage): ValueType {
   const plain = text
-    .replace(/\b(?:const|constexpr|constinit|static|inline|volatile|register|extern|mutable|mut|final|readonly|in|out|inout|uniform|varying|highp|mediump|lowp|precise|let|var|val|intent\([^)]*\)|parameter|value|optional|save|attributes?)\b/gi, ' ')
+    .replace(/\b(?:intent|attributes?|dimension|bind)\s*\([^)]*\)/gi, ' ')
+    .replace(/\b(?:const|constexpr|constinit|static|inline|volatile|register|extern|mutable|mut|final|readonly|in|out|inout|uniform|varying|highp|mediump|lowp|precise|let|var|val|parameter|value|optional|save|pure|elemental|recursive|allocatable|pointer|target)\b/gi, ' ')
     .replace(/[&*?]/g, ' ')
     .replace(/^\s*::?/, '')
     .replace(/,/g, ' ')

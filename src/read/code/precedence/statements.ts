@@ -445,7 +445,7 @@ class StatementReader {
         p.next();
         break;
       }
-      if (this.#word(here) === 'function') return this.#fortranFunction(here, words.join(' '));
+      if (this.#word(here) === 'function') return this.#fortranFunction(here, words.join(' ').replace(/ (?=[(,])/g, ''));
       if (!hasColons && here.kind === 'name' && words.length > 0 && !/^(?:precision|\*|\()$/.test(this.#word(here))) break;
       if (here.kind === 'open') {
         const from = here.start;

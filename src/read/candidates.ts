@@ -14,6 +14,8 @@ export interface Found {
   readonly variable: Candidate;
   /** An exact expression; `infinity` for large quantities. */
   readonly point: Expression;
+  /** Where a side is written: `x \\to 0^+`. */
+  readonly side?: 'right' | 'left';
   readonly from: 'order term' | 'condition' | 'text' | 'only symbol' | 'only ratio';
 }
 
@@ -224,7 +226,10 @@ function fromCondition(condition: Expression, ratios: readonly Candidate[]): Fou
   if (!left || !right) return null;
   const one = rationalOf(right);
   if (kind === 'to') {
-    if (left.kind === 'symbol') return { variable: symbolCandidate(left.name), point: withoutSide(right), from: 'condition' };
+    if (left.kind === 'symbol') {
+      const side = right.kind === 'power' && right.exponent.kind === 'symbol' ? right.exponent.name : '';
+      return { variable: symbolCandidate(left.name), point: withoutSide(right), ...(side === '+' ? { side: 'right' as const } : side === '-' ? { side: 'left' as const } : {}), from: 'condition' };
+    }
     const asRatio = ratioOf(left, ratios);
     return asRatio ? { variable: asRatio, point: right, from: 'condition' } : null;
   }

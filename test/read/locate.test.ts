@@ -80,6 +80,11 @@ describe('candidates', () => {
   ])('%s', (marked, expected) => {
     expect(variable(marked)).toBe(expected);
   });
+  it('keeps the side that a condition states', () => {
+    const { found } = at('$\\sqrt{‸x + a}, \\quad x \\to 0^+$');
+    const result = found.ok ? candidates(found.value.expression, { conditions: found.value.context.conditions }).found : null;
+    expect(result && [result.variable.name, shown(result.point), result.side]).toEqual(['x', '0', 'right']);
+  });
   it('finds ratios only where a symbol occurs in no other way', () => {
     const ratios = (text: string): string[] => {
       const read = readLatex(text);

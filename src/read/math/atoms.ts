@@ -26,6 +26,8 @@ export function startsFactor(p: State): boolean {
       return true;
     case 'open':
       return true;
+    case 'text':
+      return isTextName(p);
     case 'mark':
       if (t.text === '|') return p.bars === 0 || opensHere(p);
       if (t.text === '.') return startsDecimal(p);
@@ -39,6 +41,12 @@ export function startsFactor(p: State): boolean {
 }
 /** Commands that end or separate what is being read. */
 const NOT_FACTORS = new Set('cdot times ast div pm mp bullet star rvert rVert rangle rfloor rceil rparen rbrack rbrace implies iff Rightarrow Leftrightarrow Longrightarrow in notin forall exists therefore because land lor wedge vee mid colon semicolon not over choose atop end quad qquad hline cr slash vert middle to where qedhere dotproduct cross leftarrow subset subseteq cup cap setminus'.split(' '));
+
+/** `\text{SVF} = ...`: words before a relation sign at the start of a formula are a name. */
+export function isTextName(p: State): boolean {
+  const after = peek(p, 1);
+  return peek(p).kind === 'text' && /^\s*[\p{L}][\p{L}\d _-]{0,30}\s*$/u.test(peek(p).text) && relationOf(after) !== null && (p.at === 0 || p.tokens[p.at - 1]?.kind === 'space');
+}
 
 /** `.5`: a point before a digit, not behind something it could be a full stop of. */
 function startsDecimal(p: State): boolean {
@@ -69,6 +77,9 @@ export function atom(p: State): Expression {
       return name(p);
     case 'open':
       return group(p);
+    case 'text':
+      if (isTextName(p)) return node(p, from, { kind: 'symbol', name: `\\text{${next(p).text.trim()}}` });
+      break;
     case 'mark':
       if (t.text === '.') return number(p);
       if (t.text === '...') {
@@ -323,7 +334,13 @@ function decorated(p: State): Expression {
   p.at = close + 1;
   if (LETTERFORMS.has(t.text) && /^[Oo]$/.test(content) && (opensBracket(peek(p)) || peek(p).kind === 'open')) return order(p, from, content === 'o');
   if (content === '') fail(p, `\\${t.text} has no argument yet; add it in braces.`, t);
-  const value = withSubscript(p, from, `\\${t.text}{${content}}`);
+  // `\vec r\,'`: the prime belongs to the name.
+  let behind = p.at;
+  while (p.tokens[behind]?.kind === 'space') behind += 1;
+  let primes = 0;
+  for (; isMark(p.tokens[behind], "'") && behind < p.end; behind += 1) primes += 1;
+  if (primes > 0) p.at = behind;
+  const value = withSubscript(p, from, `\\${t.text}{${content}}${"'".repeat(primes)}`);
   if (BOLD.has(t.text) && value.kind === 'symbol') {
     if (/^\d+$/.test(content)) return node(p, from, build.number(BigInt(content)));
     return node(p, from, { kind: 'vector', operation: 'symbol', name: value.name, args: [] });

@@ -45,6 +45,8 @@ export function gatherFacts(tokens: readonly Token[], match: Int32Array): NameFa
   let iBound = false;
   let jInExponent = false;
   let iSeen = false;
+  let iIndex = false;
+  let iInExponent = false;
   let dotProducts = false;
   const token = (i: number): Token | undefined => tokens[i];
   const is = (i: number, text: string): boolean => tokens[i]?.kind === 'mark' && tokens[i]?.text === text;
@@ -78,6 +80,7 @@ export function gatherFacts(tokens: readonly Token[], match: Int32Array): NameFa
         subscripted = true;
         const open = k + 1;
         const end = token(open)?.kind === 'open' && (match[open] ?? -1) > 0 ? (match[open] as number) : open;
+        for (let inner = open; inner <= end && inner < open + 20; inner += 1) if (token(inner)?.kind === 'letter' && token(inner)?.text === 'i') iIndex = true;
         full += tokens.slice(k, end + 1).map((x) => (x.kind === 'command' ? `\\${x.text}` : x.kind === 'open' || x.kind === 'close' ? '' : x.text)).join('');
         k = end + 1;
       } else break;
@@ -122,14 +125,17 @@ export function gatherFacts(tokens: readonly Token[], match: Int32Array): NameFa
       } else if ((is(i - 1, '/') && !bracket) || (token(i - 1)?.kind === 'open' && token(i + 1)?.kind === 'close' && token(i - 2)?.kind === 'close')) eulerByUse = true;
       else bareE = true;
     }
-    if (name === 'i' && !subscripted) iSeen = true;
+    if (name === 'i' && !subscripted) {
+      iSeen = true;
+      if (insideEulerExponent(tokens, match, i)) iInExponent = true;
+    }
     if (name === 'j' && !iSeen && insideEulerExponent(tokens, match, i)) jInExponent = true;
   }
   const words = tokens.some((t) => t.kind === 'command' && /^(?:ln|log|lim|exp)$/.test(t.text));
   const eulerNumber = variableExponent || eulerByUse || (!bareE && sawEPower && !(plainSquareOnly && !words));
   const truncated = tokens.some((t, i) => (t.kind === 'command' && /^(?:[cl]?dots.?|approx|sim|simeq|mathcal|order)$/.test(t.text)) || t.text === '...' || (/^[Oo]$/.test(t.text) && tokens[i + 1]?.text === '('));
   const infix = tokens.some((t) => t.kind === 'command' && (t.text === 'over' || t.text === 'choose'));
-  return { infix, surelyFunctions, differentiated, truncated, bare, alone, eulerNumber, imaginary: jInExponent ? 'j' : iBound ? null : 'i', dotProducts, indices };
+  return { infix, surelyFunctions, differentiated, truncated, bare, alone, eulerNumber, imaginary: jInExponent ? 'j' : iBound || (iIndex && !iInExponent) ? null : 'i', dotProducts, indices };
 }
 
 function exponentText(tokens: readonly Token[], match: Int32Array, at: number): string {

@@ -280,7 +280,7 @@ export function factor(p: State): Expression {
         const second = count > 0 && value.kind === 'power' && p.options.notation === 'latex' && t.text === '^' && p.tokens[p.at - 1]?.kind !== 'mark';
         if (second && !isMark(p.tokens[p.at - 1], ')')) fail(p, 'Two exponents stand side by side; put braces around the inner power.');
         next(p);
-        const exponent = exponentOf(p);
+        const exponent = sideMark(p) ?? exponentOf(p);
         value = node(p, from, { kind: 'power', base: value, exponent });
       } else if (t.kind === 'super') {
         next(p);
@@ -299,6 +299,18 @@ export function factor(p: State): Expression {
       } else return value;
     }
   });
+}
+
+/** `0^+`, `a^{-}`: the side from which a limit is taken, kept as a power by a sign. */
+function sideMark(p: State): Expression | null {
+  const from = p.at;
+  const braced = peek(p).kind === 'open';
+  const sign = braced ? peek(p, 1) : peek(p);
+  if (!isMark(sign, '+', '-') || (braced && p.match[from] !== from + 2)) return null;
+  const after = peek(p, braced ? 3 : 1);
+  if (!braced && !(after.kind === 'end' || after.kind === 'close' || after.kind === 'space' || after.kind === 'text' || isMark(after, ')', ']', ',', ';', '.'))) return null;
+  p.at += braced ? 3 : 1;
+  return node(p, from, { kind: 'symbol', name: sign.text });
 }
 
 /** The number or letter run of Unicode superscripts. */

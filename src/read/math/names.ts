@@ -61,6 +61,8 @@ export function name(p: State): Expression {
   if (base === '\\Delta' && isName(peek(p)) && !p.options.symbols.has(base)) base = `${base} ${nameText(next(p))}`;
   let index = '';
   let primes = 0;
+  /** A superscript that is a label: `E^{\\text{mix}}`, `x^*`. */
+  let label = '';
   /** An exponent that stands before the subscript: `x^2_1`. */
   let early: { readonly at: number; readonly end: number } | null = null;
   for (;;) {
@@ -71,7 +73,10 @@ export function name(p: State): Expression {
     } else if (isMark(mark, "'")) {
       next(p);
       primes += 1;
-    } else if (isMark(mark, '^') && early === null && index === '' && subscriptBehind(p) > 0 && !(base === 'H' && derivativeExponent(p) !== null)) {
+    } else if (isMark(mark, '^') && label === '' && labelBehind(p) !== null) {
+      label = labelBehind(p)?.text ?? '';
+      p.at = labelBehind(p)?.end ?? p.at;
+    } else if (isMark(mark, '^') && early === null && index === '' && subscriptBehind(p) > 0 && derivativeExponent(p) === null && !isPrimeExponent(p)) {
       const behind = subscriptBehind(p);
       early = { at: p.at, end: behind };
       p.at = behind;
@@ -94,7 +99,7 @@ export function name(p: State): Expression {
       }
     } else break;
   }
-  const full = index === '' ? base : `${base}_${index}`;
+  const full = `${index === '' ? base : `${base}_${index}`}${label}`;
   if (early) {
     const behind = p.at;
     const symbol = node(p, from, { kind: 'symbol', name: full });
@@ -105,17 +110,17 @@ export function name(p: State): Expression {
     return node(p, from, { kind: 'power', base: symbol, exponent });
   }
   if (isMark(peek(p), '^') && isSymbolicOrder(p) && looksLikeFunction(p, base, index, primes)) fail(p, `The derivative of ${full} has a symbolic order; write a number for the order.`, t);
-  const constant = index === '' && primes === 0 && !p.options.symbols.has(full) ? constantOf(p, t, base) : null;
+  const constant = index === '' && primes === 0 && label === '' && !p.options.symbols.has(full) ? constantOf(p, t, base) : null;
   if (constant) return node(p, from, constant);
   if (index !== '' && primes === 0 && /^\\gamma_(?:E|\{EM\}|\{\\mathrm\{E\}\})$/.test(full) && !p.options.symbols.has(full)) return node(p, from, build.constant('eulerGamma'));
-  const special = p.options.symbols.has(full) || p.options.functions.has(full) ? null : letterFunction(p, from, base, index, primes);
+  const special = label !== '' || p.options.symbols.has(full) || p.options.functions.has(full) ? null : letterFunction(p, from, base, index, primes);
   if (special) return special;
   const bracket = peek(p);
   if (isMark(bracket, '(', '[') && applies(p, base, index, primes)) {
     const args = bracketArguments(p);
     return node(p, from, { kind: 'apply', name: full, args, derivatives: args.map((_, i) => (i === 0 ? primes : 0)) });
   }
-  return node(p, from, { kind: 'symbol', name: primes === 0 ? full : `${base}${"'".repeat(primes)}${index === '' ? '' : `_${index}`}` });
+  return node(p, from, { kind: 'symbol', name: primes === 0 ? full : `${base}${"'".repeat(primes)}${index === '' ? '' : `_${index}`}${label}` });
 }
 
 /** `^{(4)}` behind a function's name; the number of differentiations, or null. */
@@ -127,6 +132,19 @@ function derivativeExponent(p: State): number | null {
   const inner = p.tokens.slice(open + 2, close);
   return inner.length > 0 && inner.length < 4 && inner.every((t) => t.kind === 'digit') ? Number(inner.map((t) => t.text).join('')) : null;
 }
+/** The label that stands as a superscript here (`^*`, `^\\dagger`, `^{\\text{mix}}`), its spelling and the token behind it; null for a real exponent. */
+function labelBehind(p: State): { readonly text: string; readonly end: number } | null {
+  const open = p.at + 1;
+  const close = p.match[open] ?? -1;
+  const inner = close > open ? p.tokens.slice(open + 1, close) : [p.tokens[open]];
+  const [only] = inner;
+  if (inner.length !== 1 || !only) return null;
+  const end = close > open ? close + 1 : open + 1;
+  if (only.kind === 'text') return { text: `^{\\text{${only.text.trim()}}}`, end };
+  if (isMark(only, '*')) return { text: '^*', end };
+  return only.kind === 'command' && /^(?:ast|star|dagger|ddagger|dag|sharp|flat|parallel|perp)$/.test(only.text) ? { text: `^\\${only.text}`, end } : null;
+}
+
 /** Token of the underscore behind the exponent that starts here, or -1. */
 function subscriptBehind(p: State): number {
   const close = p.match[p.at + 1] ?? -1;

@@ -1,7 +1,7 @@
 /** The door of the formula reader: text in, one formula with its trailing conditions out. */
 import type { Expression } from '../../expression/index.ts';
 import { failure, type Outcome, success } from '../../outcome.ts';
-import { atom, startsFactor, texArgument } from './atoms.ts';
+import { atom, isTextName, startsFactor, texArgument } from './atoms.ts';
 import { infix } from './brackets.ts';
 import { gatherFacts, type NameFacts } from './facts.ts';
 import { factor, factorRun, isCondition, relation, sum, term } from './grammar.ts';
@@ -121,7 +121,7 @@ export function readFormula(text: string, notation: 'latex' | 'plain', options: 
     const conditions: Expression[] = [];
     const remarks: string[] = [];
     for (;;) {
-      while (isSeparator(peek(p)) && !startsNumber(p)) {
+      while (isSeparator(peek(p)) && !startsNumber(p) && !(main === null && isTextName(p))) {
         const t = next(p);
         if (t.kind === 'text') remarks.push(t.text.trim());
         if (isMark(t, ':') && main?.kind === 'symbol' && unknown === undefined && conditions.length === 0) {

@@ -91,9 +91,9 @@ export function libraryArithmetic(what: Arithmetic, prefix: string, written: str
     case 'merge':
       return args.length === 3 && a && b && c ? choose(c, read(a), read(b), span, env, read) : null;
     case 'horner falling':
-      return args.length === 2 && a && b ? (/polynomial/.test(prefix) ? polynomial(b, a, false, span, read) : polynomial(a, b, true, span, read)) : null;
+      return args.length === 2 && a && b ? (/polynomial/.test(prefix) ? polynomial(b, a, false, span, env, read) : polynomial(a, b, true, span, env, read)) : null;
     case 'horner rising':
-      return args.length === 2 && a && b ? polynomial(b, a, false, span, read) : null;
+      return args.length === 2 && a && b ? polynomial(b, a, false, span, env, read) : null;
   }
 }
 
@@ -106,8 +106,8 @@ const logarithm = (x: Expression, base: Expression, env: Environment): Expressio
 };
 
 /** The polynomial of a list of coefficients. */
-function polynomial(list: Code, argument: Code, falling: boolean, span: Span, read: (code: Code) => Meaning): Meaning | null {
-  const items = list.kind === 'list' ? list.items : null;
+function polynomial(list: Code, argument: Code, falling: boolean, span: Span, env: Environment, read: (code: Code) => Meaning): Meaning | null {
+  const items = list.kind === 'list' ? list.items : list.kind === 'name' ? env.listOf(list.text) : null;
   if (!items || items.length === 0) return null;
   const x = read(argument);
   const values = items.map(read);

@@ -4,6 +4,7 @@ import { attempt } from '../../outcome.ts';
 import type { Environment, Imports, Remark } from './environment.ts';
 import type { CodeLanguage } from './languages/index.ts';
 import { readMeaning } from './meaning.ts';
+import { parseByPrecedence } from './precedence/index.ts';
 import type { AssignCode, Code, FunctionCode, LambdaCode } from './syntax.ts';
 import { pathTo, walkCode } from './syntax.ts';
 import { declaredType, floating, INTEGER, UNKNOWN, type ValueType } from './types.ts';
@@ -177,6 +178,21 @@ export function environmentAt(scope: Scope, text: string, language: CodeLanguage
     imports: scope.imports,
     isLocal: (name) => find(name) !== undefined,
     isLocalFunction: (name) => find(name)?.kind === 'function',
+    constantOf: (symbol) => {
+      const indexed = /^(\w+)\[(\d{1,4})\]$/.exec(symbol);
+      const declaration = find(indexed?.[1] ?? symbol);
+      if (!declaration?.value || declaration.kind !== 'variable' || (scope.assignments.get(declaration.name) ?? 0) > 1) return null;
+      const { value } = declaration;
+      const first = language.family === 'julia' || language.family === 'r' ? 1 : 0;
+      const code = indexed ? (value.kind === 'list' ? value.items[Number(indexed[2]) - first] : undefined) : value.kind === 'opaque' && value.what === 'macro' ? parseByPrecedence(text, language, value.start, value.end).root : value;
+      if (!code || code.kind === 'list' || code.kind === 'lambda') return null;
+      const read = attempt(() => readMeaning(code, { ...environment, remark: () => undefined }));
+      return read.ok && isNumeric(read.value.expression) ? read.value.expression : null;
+    },
+    listOf: (name) => {
+      const declaration = find(name);
+      return declaration?.value?.kind === 'list' && (scope.assignments.get(declaration.name) ?? 0) <= 1 ? declaration.value.items : null;
+    },
     remark: (span, message) => remarks.push({ span, message }),
     spell: (name) => {
       if (!language.foldCase) return name;
@@ -202,6 +218,22 @@ export function environmentAt(scope: Scope, text: string, language: CodeLanguage
     },
   };
   return environment;
+}
+
+/** A number, or a sign, quotient or product of numbers: nothing that a change elsewhere could alter. */
+function isNumeric(e: Expression): boolean {
+  switch (e.kind) {
+    case 'number':
+      return true;
+    case 'negation':
+      return isNumeric(e.operand);
+    case 'quotient':
+      return isNumeric(e.numerator) && isNumeric(e.denominator);
+    case 'product':
+      return e.factors.every(isNumeric);
+    default:
+      return false;
+  }
 }
 
 const foldedLevels = new WeakMap<Level, Level>();

@@ -1,5 +1,5 @@
 /** Series and polynomials that programs already hold: branches beside a direct form, and polynomial code in one variable. */
-import { type Expression, freeSymbols, type Span } from '../../expression/index.ts';
+import { type Expression, freeSymbols, mapChildren, type Span } from '../../expression/index.ts';
 import { attempt } from '../../outcome.ts';
 import type { Environment, Meaning, Remark } from './environment.ts';
 import { type Bindings, compoundValue, execute, functionValue, valueNow, type Watcher } from './execute.ts';
@@ -30,7 +30,7 @@ export interface SeriesBranch {
 
 export interface PolynomialCode {
   readonly span: Span;
-  /** Locals filled in: only `variable` is free. */
+  /** Locals and named numbers of the file filled in: only `variable` is free. */
   readonly expression: Expression;
   readonly variable: string;
   /** Exact, lowest power first. */
@@ -152,12 +152,13 @@ export function polynomialCode(program: Program, text: string, language: CodeLan
       if (mayBePolynomial(code)) {
         const now = attempt(() => valueNow(code, body.environment, bindings));
         if (now.ok) {
-          const free = freeSymbols(now.value.meaning.expression);
+          const expression = filled(now.value.meaning.expression, body.environment);
+          const free = freeSymbols(expression);
           const [variable] = free;
-          const coefficients = variable !== undefined && free.length === 1 && body.environment.typeOf(variable).kind !== 'integer' ? polynomialIn(now.value.meaning.expression, variable) : null;
+          const coefficients = variable !== undefined && free.length === 1 && body.environment.typeOf(variable).kind !== 'integer' ? polynomialIn(expression, variable) : null;
           if (variable !== undefined && coefficients && coefficients.length > 2 && coefficients.filter((c) => c.num !== 0n).length > 1) {
             const own = now.value.meaning.type;
-            found.push({ span: span(code), expression: now.value.meaning.expression, variable, coefficients, degree: coefficients.length - 1, target, function: body.name, format: (own.weak ? (type?.format ?? own.format) : own.format) ?? language.literalFormat, through: now.value.through, body: body.code });
+            found.push({ span: span(code), expression, variable, coefficients, degree: coefficients.length - 1, target, function: body.name, format: (own.weak ? (type?.format ?? own.format) : own.format) ?? language.literalFormat, through: now.value.through, body: body.code });
             return;
           }
         }
@@ -179,6 +180,12 @@ export function polynomialCode(program: Program, text: string, language: CodeLan
     .filter((p) => p.target === null || !found.some((q) => q !== p && q.body === p.body && q.span.start > p.span.start && p.target !== null && q.through.has(p.target)))
     .map(({ through: _through, body: _body, ...rest }) => rest)
     .sort((a, b) => a.span.start - b.span.start);
+}
+
+/** Named numbers of the file filled in. */
+function filled(expression: Expression, environment: Environment): Expression {
+  const visit = (e: Expression): Expression => (e.kind === 'symbol' ? (environment.constantOf(e.name) ?? e) : mapChildren(e, visit));
+  return visit(expression);
 }
 
 function mayBePolynomial(code: Code): boolean {

@@ -250,6 +250,9 @@ describe('polynomial code', () => {
     ['glsl', 'float p(float x) { float r = -0.5; r = r * x + 0.25; r *= x; r -= 1.0; return r; }', ['-1', '1/4', '-1/2']],
     ['julia', 'p(x) = evalpoly(x, (1.0, 0.25, 0.5))', ['1', '1/4', '1/2']],
     ['fortran', 'real function p(x)\n p = 1.0 + x*(0.25 + 0.5*x)\nend function', ['1', '1/4', '1/2']],
+    ['c', 'static const float c[] = {1.0f, 0.25f, 0.5f};\nfloat p(float x) { return c[0] + x*(c[1] + x*c[2]); }', ['1', '1/4', '1/2']],
+    ['c', '#define A 0.25\nstatic const double b = -1.0/2;\ndouble p(double x) { return 1.0 + x*(A + x*b); }', ['1', '1/4', '-1/2']],
+    ['python', 'c = [0.5, 0.25, 1]\ndef p(x):\n    return np.polyval(c, x)\n', ['1', '1/4', '1/2']],
     ['c', '(1.27323954f * x) - (0.405284735f * x * x)', ['0', '63661977/50000000', '-81056947/200000000']],
   ])('%s: %s', (language, text, expected) => {
     expect(coefficients(text, language)).toEqual([expected]);

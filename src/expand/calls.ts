@@ -7,7 +7,7 @@ import {
   add, divide, eventualSign, exactOf, exponential, growth, hyperbolic, imaginaryPart, inverse, type InverseFunction, isRealMulti, logarithm, mapConstants, type Multi, multiply, negate, power, realPart,
   Series, sineCosine, split, subtract, withExact,
 } from '../series/index.ts';
-import { evaluateDescribed } from './described.ts';
+import { evaluateDescribed, refusePole } from './described.ts';
 import type { Session } from './session.ts';
 
 export type Evaluate = (s: Session, e: Expression) => Multi;
@@ -21,7 +21,10 @@ export function evaluateCall(s: Session, e: CallNode, evaluate: Evaluate): Multi
   const direct = elementary[e.function];
   const [first] = args;
   if (description && !acceptsArity(description, args.length)) throw new Declined('bad-request', `${description.title} does not take ${args.length} argument${args.length === 1 ? '' : 's'}; correct the call.`);
-  if (args.every((a) => !(a instanceof Series))) return c.field.call(e.function, args as readonly Element[]);
+  if (args.every((a) => !(a instanceof Series))) {
+    if (description) refusePole(s, description, args as readonly Element[], evaluate);
+    return c.field.call(e.function, args as readonly Element[]);
+  }
   if (direct && first !== undefined && args.length === 1) return remembered(s, e.function, first, () => direct(s, first));
   const several = compound[e.function];
   if (several) return several(s, args);

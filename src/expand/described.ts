@@ -1,9 +1,9 @@
 /** A function by its description: local form at singular places and infinity, differential equation or derivative at regular points. */
 import type { Element } from '../algebra/types.ts';
-import { build, type Expression, type Rational } from '../expression/index.ts';
+import { build, type Expression, Q, type Rational } from '../expression/index.ts';
 import type { FormalSeries, FunctionDescription, LocalForm, Place } from '../functions/index.ts';
 import { Declined } from '../outcome.ts';
-import { alongDerivative, compose, type Context, eventualSign, exactOf, finiteStream, growth, leading, type Multi, Series, split, withExact } from '../series/index.ts';
+import { add, alongDerivative, compose, type Context, eventualSign, exactOf, finiteStream, growth, isRational, leading, monomial, type Multi, plainText, Series, signOfExponent, split, withExact } from '../series/index.ts';
 import type { Evaluate } from './calls.ts';
 import { bind, freshSymbol, type Session } from './session.ts';
 import { aroundSlowPart } from './slow-part.ts';
@@ -94,6 +94,28 @@ function inOneArgument(s: Session, d: FunctionDescription, args: readonly Multi[
 /** Whether f moves on a faster scale element than its unbounded part. */
 function fasterPart(f: Series, large: Multi): boolean {
   return !(large instanceof Series) || f.element.rank > large.element.rank;
+}
+
+/** A value at a rational constant where the function's local form is unbounded: there is none. */
+export function refusePole(s: Session, d: FunctionDescription, args: readonly Element[], evaluate: Evaluate): void {
+  const c = s.context;
+  const index = args.length - 1;
+  const at = args[index];
+  if (!d.local || at === undefined || !isRational(at)) return;
+  const trees = args.map((a) => exactOf(c, a));
+  if (d.value?.(trees)) return;
+  const offset = freshSymbol(s, 'u');
+  const z = freshSymbol(s, 'z');
+  const form = d.local(trees.map((t, k) => (k === index ? build.symbol(z) : t)), index, { kind: 'finite', center: build.number(at), offset: build.symbol(offset), side: 'right' });
+  if (!form) return;
+  const u = monomial(c, c.scale.local, Q.ONE);
+  const notes = { ...c.notes };
+  const value = evaluateForm(bind(s, [[offset, u], [z, add(c, at, u)]]), form, evaluate);
+  Object.assign(c.notes, { sided: notes.sided, divergent: notes.divergent, subdominantDropped: notes.subdominantDropped });
+  const first = value instanceof Series ? value.stream.at(0) : null;
+  if (!first || !(value instanceof Series)) return;
+  const singular = signOfExponent(c, first.exponent) < 0 || (signOfExponent(c, first.exponent) === 0 && first.coefficient instanceof Series && growth(c, first.coefficient) === 'large');
+  if (singular && growth(c, value) === 'large') throw new Declined('no-expansion', `${title(d)} has no finite value at ${plainText(build.number(at))}; correct the formula.`);
 }
 
 /** Evaluates a local form: its formal series become series of their arguments, then its body. */

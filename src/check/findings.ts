@@ -1,5 +1,5 @@
 /** From judgements to what is shown: verdict, severity, the wrong piece, the right one. */
-import { freeSymbols, Q, type Expression, type Span } from '../expression/index.ts';
+import { build, dependsOn, freeSymbols, mapChildren, Q, walk, type Expression, type Span } from '../expression/index.ts';
 import type { Finding } from '../protocol.ts';
 import { toPlain } from '../write/index.ts';
 import { type Accused, blame, isOneChangeAway } from './blame.ts';
@@ -8,11 +8,12 @@ import type { FoundFormula } from './formulas.ts';
 import { explicitPart, type General, generalIn, judgeGeneral } from './generalClaims.ts';
 import { type Hint, judge, type Judgement } from './judge.ts';
 import { calibrated } from './calibrate.ts';
-import { normalise } from './normalise.ts';
+import { isGridName, normalise } from './normalise.ts';
 import { notationOf } from './notation.ts';
 import type { Setting } from './context.ts';
 import { settingsFor, type Around, type Asked, type Choice } from './setting.ts';
-import { hasMarks } from './truncated.ts';
+import { compareSizes, leading } from './size.ts';
+import { hasMarks, withoutMarks } from './truncated.ts';
 
 export interface Place {
   readonly text: string;
@@ -31,7 +32,10 @@ interface Tried {
  * `lenient`: the function is only presumed, so that nothing fails.
  */
 export function findingOf(printed: Claim, given: Expression, asked: Asked, place: Place, options: { readonly lenient?: string } = {}): Finding | null {
-  const choices = settingsFor(given, printed.side, asked, place.around);
+  const all = settingsFor(given, printed.side, asked, place.around);
+  // Where the function does not hold the quantity in which the printed side runs, one of the two names it differently.
+  const choices = all.filter((c) => dependsOn(given, c.setting.variable) || mentionsFunction(given));
+  if (choices.length === 0) return all.length > 0 && hasMarks(printed.side) ? undecided(printed, place, `The function does not hold ${all[0]?.setting.variable ?? 'the variable'}, in which the printed side runs.`) : null;
   const tried: Tried[] = [];
   for (const choice of choices) {
     const { f, claim } = prepared(given, printed, choice.setting);
@@ -46,12 +50,25 @@ export function findingOf(printed: Claim, given: Expression, asked: Asked, place
     if (judgement.kind === 'holds') return holding(claim, f, choice.setting, judgement, place, options.lenient);
     tried.push({ choice, judgement });
   }
+  // A guess that fails counts only if no likelier guess is open, and if the terms show that it is the right one.
+  const open = tried.findIndex((t) => t.judgement.kind === 'undecided');
+  const firm = tried.findIndex((t) => t.judgement.kind === 'fails' && (t.choice.certain || t.judgement.failure.matched > 0 || (open >= 0 && isNearlyTrue(given, printed, t, place))));
+  if (open >= 0 && (firm < 0 || (open < firm && tried[firm]?.choice.certain !== true))) tried.splice(0, tried.length, ...tried.slice(open, open + 1));
+  else if (firm >= 0) tried.splice(0, tried.length, ...tried.slice(firm, firm + 1));
   const best = tried.reduce<Tried | null>((a, b) => (a === null || matchedIn(b) > matchedIn(a) ? b : a), null);
   if (!best) return null;
   const { f, claim } = prepared(given, printed, best.choice.setting);
   if (best.judgement.kind === 'undecided') return meant(claim, f, best.choice.setting) ? undecided(claim, place, best.judgement.reason) : null;
   if (best.judgement.kind !== 'fails') return null;
   if (!isHeldAgainst(claim, f, best, tried.length > 1, place)) return meant(claim, f, best.choice.setting) && hasMarks(claim.side) ? undecided(claim, place, 'It is not plain in which quantity, and where, this is an expansion; say so with a note such as leading-order: small x.') : null;
+  const unknown = unknownSymbols(f, claim.side, best.choice.setting);
+  if (unknown.length > 0) {
+    const meaning = withConstants(f, claim, unknown, best.choice.setting);
+    if (meaning?.judgement.kind === 'holds') return holding(meaning.claim, f, best.choice.setting, meaning.judgement, place, options.lenient);
+    if (meaning?.judgement.kind === 'undecided') return undecided(claim, place, meaning.judgement.reason);
+    if (meaning?.judgement.kind === 'fails' && options.lenient === undefined && !blamesUnknown(meaning.judgement, meaning.left, best.choice.setting)) return failing(meaning.claim, f, best.choice.setting, meaning.judgement, place);
+    if (blamesUnknown(best.judgement, unknown, best.choice.setting)) return undecided(claim, place, `What ${unknown.join(', ')} stands for is not said in this document.`);
+  }
   if (options.lenient !== undefined) return undecided(claim, place, `Taken as ${options.lenient} the claim does not hold; its definition does not stand in this document.`);
   return failing(claim, f, best.choice.setting, best.judgement, place);
 }
@@ -85,6 +102,70 @@ function generalFinding(claim: Claim, f: Expression, general: General, choice: C
   }
 }
 const UNDEFINED_NAME = 'The claim does not hold for the usual meaning of its left side, whose definition does not stand in this document.';
+
+/** Symbols of the printed side that the function does not hold. */
+function unknownSymbols(f: Expression, side: Expression, setting: Setting): readonly string[] {
+  return freeSymbols(withoutMarks(side)).filter((name) => name !== setting.variable && !dependsOn(f, name));
+}
+
+/** Letters by which the trade names constants. */
+const CONSTANT_LETTERS: Readonly<Record<string, readonly Expression[]>> = {
+  '\\gamma': [build.constant('eulerGamma')],
+  '\\gamma_E': [build.constant('eulerGamma')],
+  '\\gamma_e': [build.constant('eulerGamma')],
+  C: [build.constant('eulerGamma'), build.constant('catalan')],
+  G: [build.constant('catalan')],
+  K: [build.constant('catalan')],
+  A: [build.constant('glaisher')],
+  e: [build.constant('e')],
+};
+const stieltjes = (name: string): Expression | null => {
+  const index = /^\\gamma_(?:\{(\d+)\}|(\d))$/.exec(name);
+  return index ? build.call('stieltjes', build.number(Number(index[1] ?? index[2]))) : null;
+};
+
+/** The claim with its unknown letters read as constants of the trade: the reading that agrees furthest. */
+function withConstants(f: Expression, claim: Claim, unknown: readonly string[], setting: Setting): { readonly claim: Claim; readonly judgement: Judgement; readonly left: readonly string[] } | null {
+  let readings: readonly (readonly [Expression, readonly string[]])[] = [[claim.side, []]];
+  for (const name of unknown) {
+    const values = [...(CONSTANT_LETTERS[name] ?? []), ...(stieltjes(name) ? [stieltjes(name) as Expression] : [])];
+    readings = values.length === 0 ? readings.map(([side, left]) => [side, [...left, name]] as const) : readings.flatMap(([side, left]) => values.map((v) => [named(side, name, v), left] as const));
+    if (readings.length > 6) return null;
+  }
+  let best: { readonly claim: Claim; readonly judgement: Judgement; readonly left: readonly string[] } | null = null;
+  for (const [side, left] of readings) {
+    if (side === claim.side) continue;
+    const judgement = judge(f, side, claim.relation, setting);
+    const candidate = { claim: { ...claim, side }, judgement, left };
+    if (judgement.kind === 'holds') return candidate;
+    if (!best || (judgement.kind === 'fails' && best.judgement.kind === 'fails' && judgement.failure.matched > best.judgement.failure.matched)) best = candidate;
+  }
+  return best;
+}
+
+/** The symbol replaced, places kept. */
+function named(e: Expression, name: string, value: Expression): Expression {
+  return e.kind === 'symbol' && e.name === name ? { ...value, ...(e.span ? { span: e.span } : {}) } : mapChildren(e, (c) => named(c, name, value));
+}
+
+/** The first wrong term holds a symbol whose meaning is not known. */
+function blamesUnknown(judgement: Extract<Judgement, { kind: 'fails' }>, unknown: readonly string[], setting: Setting): boolean {
+  const { difference } = judgement.failure;
+  if (!difference) return unknown.length > 0;
+  return judgement.truncated.terms.some((t) => {
+    if (!unknown.some((name) => dependsOn(t.value, name))) return false;
+    const size = leading(setting, t.value);
+    return size.kind !== 'monomial' || compareSizes(size.size, difference.size) <= 0;
+  });
+}
+
+const mentionsFunction = (e: Expression): boolean => [...walk(e)].some((n) => n.kind === 'apply' || (n.kind === 'symbol' && isGridName(n)));
+
+function isNearlyTrue(given: Expression, printed: Claim, tried: Tried, place: Place): boolean {
+  if (tried.judgement.kind !== 'fails') return false;
+  const { f, claim } = prepared(given, printed, tried.choice.setting);
+  return isOneChangeAway(accusedOf(claim, f, tried.choice.setting, tried.judgement, place));
+}
 
 const matchedIn = (t: Tried): number => (t.judgement.kind === 'fails' ? t.judgement.failure.matched : -1);
 
@@ -151,4 +232,3 @@ function accusedOf(claim: Claim, f: Expression, setting: Setting, { failure, tru
 }
 
 const labelOf = (place: Place): { readonly label?: string } => (place.formula.label === null ? {} : { label: place.formula.label });
-export const namesIn = (e: Expression): readonly string[] => freeSymbols(e);

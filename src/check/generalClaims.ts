@@ -51,6 +51,9 @@ export function explicitPart(side: Expression, general: General): Expression | n
 }
 
 export function judgeGeneral(f: Expression, side: Expression, relation: Relation, general: General, setting: Setting): GeneralJudgement {
+  const body = general.sum ? general.sum.body : general.node;
+  const unknown = freeSymbols(body).filter((name) => name !== general.index && name !== setting.variable && !dependsOn(f, name));
+  if (unknown.length > 0) return { kind: 'undecided', reason: `What ${unknown.join(', ')} stands for in the general term is not said here.` };
   const truth = withoutDerivatives(f, setting.variable);
   return general.sum ? judgeSum(truth, side, relation, general.sum, general.index, setting) : judgeBetweenDots(truth, side, relation, general, setting);
 }

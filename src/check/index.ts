@@ -83,7 +83,7 @@ function checkClaim(claim: Claim, given: Expression | null, definitions: Definit
   if (given) return findingOf(claim, given, asked, place);
   const own = claim.name ?? claim.function;
   if (!own) return null;
-  if (isGridName(own)) return findingOf(claim, own, asked, place);
+  if (isGridName(own)) return findingOf(claim, own, asked, place, { lenient: 'values of a function on a grid' });
   let failed: Finding | null = null;
   for (const value of resolve(definitions, own, place.formula.span.start)) {
     const finding = findingOf(claim, value, asked, place);

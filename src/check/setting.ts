@@ -37,14 +37,20 @@ export function settingsFor(f: Expression, side: Expression, asked: Asked, aroun
   const named = asked.variable ? carrier(asked.variable, f, side) : null;
   const found = candidates(build.sum(f, withoutMarks(side)), { orders, conditions: around.conditions, before: around.before, after: around.after }).found;
   const foundName = found ? carrier(found.variable.expression, f, side) : null;
-  const certain = found !== null && found.from !== 'only symbol' && found.from !== 'only ratio';
+  // x/log^3 x falls at 0 and rises at infinity: such an O-term names the quantity, not the point.
+  const logarithmic = orders.some((o) => [...walk(o)].some((n) => n.kind === 'call'));
+  const certain = found !== null && found.from !== 'only symbol' && found.from !== 'only ratio' && !(found.from === 'order term' && logarithmic);
   const foundPoint = found ? (found.point.kind === 'constant' && found.point.name === 'infinity' ? 'inf' : found.point) : null;
   if (named !== null) {
     if (asked.point) return [make(named, asked.point, true)];
     if (foundName === named && foundPoint && certain) return [make(named, foundPoint, true)];
     return pointsFor(side, named).map((p, i) => make(named, p, i === 0 && asked.variable !== null));
   }
-  if (foundName !== null && foundPoint && certain) return [make(foundName, asked.point ?? foundPoint, true)];
+  if (foundName !== null && foundPoint && certain) {
+    const point = asked.point ?? foundPoint;
+    // 1/x in an O-term does not say at which end of the line.
+    return [make(foundName, point, true), ...(point === 'inf' && !asked.point ? [make(foundName, '-inf', false)] : [])];
+  }
   const names = foundName !== null ? [foundName] : likelyVariables(f, side);
   return names.flatMap((name) => (asked.point ? [make(name, asked.point, true)] : pointsFor(side, name).map((p) => make(name, p, false))));
 }
@@ -134,6 +140,10 @@ function shiftIn(e: Expression, name: string): Expression | null {
       const [a, b] = node.terms;
       if (a?.kind === 'symbol' && a.name === name && b && !dependsOn(b, name)) {
         shifts.push(b.kind === 'negation' ? b.operand : build.negation(b));
+        return;
+      }
+      if (a && b?.kind === 'negation' && b.operand.kind === 'symbol' && b.operand.name === name && !dependsOn(a, name)) {
+        shifts.push(a);
         return;
       }
     }

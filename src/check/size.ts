@@ -3,6 +3,7 @@ import { build, dependsOn, Q, type Expression, type Rational } from '../expressi
 import { expand, type Expansion } from '../expand/index.ts';
 import type { Outcome } from '../outcome.ts';
 import type { Setting } from './context.ts';
+import { enclose } from './enclose.ts';
 
 /** t^power * L^log, larger power meaning smaller. */
 export interface Size {
@@ -37,8 +38,24 @@ export function leading(setting: Setting, f: Expression): Leading {
   const { terms, prefactor, exact } = result.value;
   const [first] = terms;
   if (!first) return exact ? { kind: 'zero' } : { kind: 'undecided', reason: 'No term of the difference was found.', needsTime: false };
-  if (prefactor || first.scale || first.power.kind !== 'number') return { kind: 'other' };
+  if (prefactor || first.power.kind !== 'number') return { kind: 'other' };
+  if (first.scale && !isOscillation(first.scale)) return { kind: 'other' };
+  if (first.scale) return { kind: 'monomial', size: { power: first.power.value, log: first.log }, coefficient: build.product(first.coefficient, first.scale) };
   return { kind: 'monomial', size: { power: first.power.value, log: first.log }, coefficient: first.coefficient };
+}
+
+/** Sines and cosines only: bounded, and not tending to 0, so that the power alone is the size. */
+function isOscillation(e: Expression): boolean {
+  switch (e.kind) {
+    case 'call':
+      return e.function === 'sin' || e.function === 'cos';
+    case 'power':
+      return e.exponent.kind === 'number' && e.exponent.value.num > 0n && isOscillation(e.base);
+    case 'product':
+      return e.factors.every(isOscillation);
+    default:
+      return false;
+  }
 }
 
 /** Products and quotients of the variable's powers are read off the tree: no engine is needed for `3 x^2/8`. */
@@ -140,6 +157,6 @@ function compareQuotient(setting: Setting, quotient: Expression): Comparison {
 }
 
 function signOfExpression(e: Expression): number {
-  const value = numberOf(e);
-  return value ? Q.signOf(value) : 0;
+  const range = enclose(e);
+  return range === null ? 0 : Q.signOf(range.low) > 0 ? 1 : Q.signOf(range.high) < 0 ? -1 : 0;
 }

@@ -3,7 +3,7 @@
  * Whether a mutant is still true is decided here from the published coefficients alone, in exact rationals; the engine is not asked.
  */
 import { readFileSync } from 'node:fs';
-import { build, PLAIN_STYLE, Q, type DocumentStyle, type Expression, type Rational } from '../../src/expression/index.ts';
+import { build, freeSymbols, PLAIN_STYLE, Q, type DocumentStyle, type Expression, type Rational } from '../../src/expression/index.ts';
 import { rationalOf, readExact, readExpression } from '../../src/read/index.ts';
 import { toLatex, toPlain, toUnicode } from '../../src/write/index.ts';
 
@@ -38,6 +38,8 @@ export function publishedRows(file: string): readonly Published[] {
     .split('\n')
     .map((line) => JSON.parse(line) as Row);
   return rows.flatMap((row) => {
+    const read = readExpression(row.latex, 'latex', { symbols: [row.variable] });
+    if (!read.ok || freeSymbols(read.value).join() !== row.variable) return [];
     if (row.kind !== 'explicit' || row.point !== '0' || row.prefactor !== undefined || row.terms.length < 3 || Object.keys(row.parameters).length > 0) return [];
     const terms = row.terms.map(([c, p, log, scale]) => {
       const exact = readExact(c);
@@ -139,7 +141,7 @@ function plainLeft(row: Published, write: (e: Expression) => string): string | n
   if (!read.ok || /\\/.test(row.variable)) return null;
   const text = write(read.value);
   const again = readExpression(text, 'plain', { symbols: [row.variable] });
-  return again.ok ? text : null;
+  return again.ok && !/int\(|sum\(|limit\(/.test(text) ? text : null;
 }
 
 const lastPower = (row: Published): number => row.terms.at(-1)?.power ?? 0;

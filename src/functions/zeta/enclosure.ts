@@ -3,13 +3,13 @@
  * zeta(s,a) by Euler-Maclaurin (DLMF 25.11.8 and 2.10.1): sum of (a+k)^-s below N, (a+N)^(1-s)/(s-1), (a+N)^-s/2, and B_2k/(2k)! (s)_(2k-1) (a+N)^(1-s-2k);
  * remainder at most 4 |(s)_2M|/(2pi)^2M e^(|Im s| pi/2) times the integral of |a+N+t|^(-Re s-2M).
  */
-import { Q } from '../../expression/index.ts';
+import { Q, type Rational } from '../../expression/index.ts';
 import { type Ball, type ComplexBall, complex, real } from '../../rigorous/index.ts';
 import { bound, complexKit, exactInteger, type Kit, realKit } from '../enclosure/kit.ts';
 import { geometricTail } from '../enclosure/series.ts';
 import type { Algorithm } from '../enclosure/wrap.ts';
 import { gamma, logGamma } from '../gamma/enclosure.ts';
-import { bernoulli, factorial } from '../sequences.ts';
+import { bernoulli, binomial, eulerNumber, factorial } from '../sequences.ts';
 
 /** Truncated power series in the shift of s: coefficients 0..n. */
 type Jet<T> = readonly T[];
@@ -535,6 +535,34 @@ export const zetaAlgorithms: Readonly<Record<string, Algorithm>> = {
     real: (kit, [n, x]) => {
       const order = integer(n);
       return x && order !== null ? debye(kit, order, x) : null;
+    },
+  },
+};
+/** B_n(x) by Horner's rule on exact coefficients (DLMF 24.2.5). */
+function bernoulliPolynomial<T>(kit: Kit<T>, n: number, x: T): T | null {
+  if (n < 0 || n > 1000) return null;
+  const { a } = kit;
+  let sum = a.zero;
+  for (let k = 0; k <= n; k++) sum = a.add(a.multiply(sum, x), a.fromRational(Q.multiply(Q.rational(binomial(n, k)), bernoulli(k))));
+  return sum;
+}
+const numberOf =
+  (f: (n: number) => Rational): Algorithm['real'] =>
+  (kit, [n]) => {
+    const order = integer(n);
+    return order === null || order < 0 || order > 2000 ? null : kit.a.fromRational(f(order));
+  };
+export const numberAlgorithms: Readonly<Record<string, Algorithm>> = {
+  bernoulliNumber: { real: numberOf(bernoulli) },
+  eulerNumber: { real: numberOf((n) => Q.rational(eulerNumber(n))) },
+  bernoulliPolynomial: {
+    real: (kit, [n, x]) => {
+      const order = integer(n);
+      return x && order !== null ? bernoulliPolynomial(kit, order, x) : null;
+    },
+    complex: (kit, [n, x]) => {
+      const order = zeros(n);
+      return x && order !== null ? bernoulliPolynomial(kit, order, x) : null;
     },
   },
 };

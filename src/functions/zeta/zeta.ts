@@ -7,6 +7,7 @@ import { alternating, atInfinity, F1, F2, form, isAt, series, taylor } from '../
 import { polygammaTree } from '../gamma/gamma.ts';
 import { bernoulli, factorial, risingFactorial } from '../sequences.ts';
 import { zetaAtInteger } from './exactZeta.ts';
+import { bernoulliPolynomialValue } from './numbers.ts';
 
 const stieltjes = (n: number): Expression => (n === 0 ? euler : call('stieltjes', n));
 
@@ -123,7 +124,7 @@ export function hurwitzValue(args: readonly Expression[]): Expression | null {
   if (at && Q.isOne(at)) return zetaValue([s]) ?? call('zeta', s);
   const n = asInteger(s, 60);
   if (n !== null && n >= 2) return times(Q.divide(alternating(n), Q.rational(factorial(n - 1))), polygammaTree(n - 1, a));
-  if (n !== null && n <= 0) return over(neg(call('bernoulliPolynomial', 1 - n, a)), 1 - n);
+  if (n !== null && n <= 0) return over(neg((at && bernoulliPolynomialValue([build.number(1 - n), a])) ?? call('bernoulliPolynomial', 1 - n, a)), 1 - n);
   if (at && Q.equal(at, Q.HALF)) return times(minus(pow(2, s), 1), call('zeta', s));
   return null;
 }

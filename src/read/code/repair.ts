@@ -19,11 +19,16 @@ function isMistaken(cast: CastCode, text: string, language: CodeLanguage): boole
   return !name || !new RegExp(`\\b(?:typedef|using|typename|class|struct|enum|union)\\b[^;{}()]*\\b${type}\\b`).test(text);
 }
 
-/** The program with mistaken casts read again; the program itself where there are none. */
+/** A chain of operators longer than the depth to which concrete trees are copied. */
+const isCutOff = (code: Code): boolean => code.kind === 'opaque' && code.parts.length === 0 && /^binary (?:expression|operator)$/.test(code.what);
+
+/** The program with mistaken casts and cut-off chains read again; the program itself where there are none. */
 export function repairCasts(program: Program, text: string, language: CodeLanguage): Program {
-  if (!['c', 'cpp', 'java', 'csharp'].includes(language.family)) return program;
+  const casts = ['c', 'cpp', 'java', 'csharp'].includes(language.family);
   const mistaken: Code[] = [];
-  for (const code of walkCode(program.root)) if (code.kind === 'cast' && isMistaken(code, text, language)) mistaken.push(code);
+  for (const code of walkCode(program.root)) {
+    if (code.kind === 'cast' ? casts && isMistaken(code, text, language) : isCutOff(code)) mistaken.push(code);
+  }
   let { root } = program;
   let done = -1;
   for (const cast of mistaken.slice(0, 200)) {

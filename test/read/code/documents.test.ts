@@ -266,6 +266,13 @@ describe('polynomial code', () => {
   });
 });
 
+describe('very long sums', () => {
+  it.each(['c', 'python', 'rust', 'javascript', 'julia'])('%s', (language) => {
+    const read = reader.readCode(`${'x + '.repeat(3_000)}x`, language);
+    expect(read.ok && read.value.expression.kind === 'sum' && read.value.expression.terms.length).toBe(3_001);
+  });
+});
+
 describe('a text of several statements', () => {
   it('is the value it gives, locals filled in', () => {
     const read = reader.readCode('double f(double x) { double x2 = x*x; double s = sin(x2); return s / x2; }', 'c');

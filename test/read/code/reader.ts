@@ -1,7 +1,7 @@
 /** What the tests of this folder share: one reader with its grammars, and trees from it. */
 import { type Expression, structureKey } from '../../../src/expression/index.ts';
 import { CodeReader, type CodeReading } from '../../../src/read/code/index.ts';
-import { nodeGrammars } from '../../../src/read/code/node-grammars.ts';
+import { nodeGrammars } from './grammars.ts';
 
 export const reader = new CodeReader(nodeGrammars(import.meta.url));
 

@@ -1,7 +1,7 @@
 /** Grammar bytes from the installed packages, for Node programs that run from the source tree (tests, development). */
 import { readFile } from 'node:fs/promises';
 import { createRequire } from 'node:module';
-import type { GrammarHost } from './grammar/loader.ts';
+import type { GrammarHost } from '../../../src/read/code/index.ts';
 
 /** `from` is a file or folder URL inside the project. */
 export function nodeGrammars(from: string | URL): GrammarHost {

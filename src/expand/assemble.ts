@@ -3,7 +3,8 @@ import { build, type Expression, Q } from '../expression/index.ts';
 import { type Context, exactOf, isRational, negateElement, addElements } from '../series/index.ts';
 import type { Expansion, ExpansionProblem, ExpansionRemainder, ExpansionTerm } from './expansion.ts';
 import { factorTree, type RawTerm } from './flatten.ts';
-import type { Direction, SideResult } from './side.ts';
+import type { Direction } from './open-side.ts';
+import type { SideResult } from './side.ts';
 
 const one = build.number(1);
 
@@ -16,7 +17,7 @@ export function assemble(problem: ExpansionProblem, direction: Direction | 'both
   const finite = direction !== 'inf' && direction !== '-inf';
   const shapes = { c, finite, negative, prefactor, toVariable: side.toVariable };
   const oscillating = side.terms.some((t) => t.oscillation !== null) || side.remainder?.oscillation != null;
-  const exact = side.remainder === null && !c.notes.subdominantDropped;
+  const exact = side.remainder === null;
   return {
     function: problem.function,
     variable: problem.variable,

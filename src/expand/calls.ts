@@ -126,6 +126,8 @@ const elementary: Readonly<Record<string, Elementary>> = {
     noteSide(s, f);
     return sign === -1 ? negate(s.context, f) : f;
   },
+  re: (s, f) => mapConstants(s.context, f, (e) => realPart(s.context, e)),
+  im: (s, f) => mapConstants(s.context, f, (e) => imaginaryPart(s.context, e)),
   sign: (s, f) => {
     const sign = realSign(s, f);
     if (sign === 'complex') throw new Declined('no-expansion', 'The sign of a complex quantity is not expanded; use a real argument.');

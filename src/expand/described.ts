@@ -3,7 +3,7 @@ import type { Element } from '../algebra/types.ts';
 import { build, type Expression, Q, type Rational } from '../expression/index.ts';
 import type { FormalSeries, FunctionDescription, LocalForm, Place } from '../functions/index.ts';
 import { Declined } from '../outcome.ts';
-import { add, alongDerivative, compose, type Context, eventualSign, exactOf, finiteStream, growth, isRational, leading, monomial, type Multi, plainText, Series, signOfExponent, split, withExact } from '../series/index.ts';
+import { add, alongDerivative, beyondAllOrders, compose, type Context, eventualSign, exactOf, finiteStream, growth, isRational, leading, monomial, type Multi, multiply, plainText, Series, signOfExponent, split, withExact } from '../series/index.ts';
 import type { Evaluate } from './calls.ts';
 import { bind, freshSymbol, type Session } from './session.ts';
 import { aroundSlowPart } from './slow-part.ts';
@@ -57,7 +57,10 @@ function inOneArgument(s: Session, d: FunctionDescription, args: readonly Multi[
     }
     if (sign === 'complex' || sign === 0) throw new Declined('no-expansion', `${title(d)} is not expanded towards complex infinity; use a real direction.`);
     const form = d.local?.(trees, index, { kind: 'infinite', argument: z, direction: sign });
-    if (form) return evaluateForm(bind(s, [[z.kind === 'symbol' ? z.name : '', f]]), form, evaluate);
+    if (form) {
+      const value = evaluateForm(bind(s, [[z.kind === 'symbol' ? z.name : '', f]]), form, evaluate);
+      return form.subdominantDropped ? multiply(c, value, add(c, Q.ONE, beyondAllOrders(c, large))) : value;
+    }
     if (d.local) {
       const general = d.parity && sign === -1 ? 'its behaviour for large negative arguments is not known here' : 'its behaviour for large arguments is not known here';
       throw new Declined('no-expansion', `${title(d)}: ${general}; choose a finite point.`);
@@ -111,7 +114,7 @@ export function refusePole(s: Session, d: FunctionDescription, args: readonly El
   const u = monomial(c, c.scale.local, Q.ONE);
   const notes = { ...c.notes };
   const value = evaluateForm(bind(s, [[offset, u], [z, add(c, at, u)]]), form, evaluate);
-  Object.assign(c.notes, { sided: notes.sided, divergent: notes.divergent, subdominantDropped: notes.subdominantDropped });
+  Object.assign(c.notes, { sided: notes.sided, divergent: notes.divergent });
   const first = value instanceof Series ? value.stream.at(0) : null;
   if (!first || !(value instanceof Series)) return;
   const singular = signOfExponent(c, first.exponent) < 0 || (signOfExponent(c, first.exponent) === 0 && first.coefficient instanceof Series && growth(c, first.coefficient) === 'large');
@@ -125,7 +128,6 @@ export function evaluateForm(s: Session, form: LocalForm, evaluate: Evaluate): M
   for (const assumption of form.assumptions ?? []) c.notes.assumptions.add(assumption);
   const leaves: [string, Multi][] = [];
   for (const [name, formal] of Object.entries(form.formals)) leaves.push([name, evaluateFormal(s, formal, evaluate)]);
-  if (form.subdominantDropped) c.notes.subdominantDropped = true;
   return evaluate(bind(s, leaves), form.body);
 }
 

@@ -8,7 +8,7 @@ import {
 import { evaluateApply } from './apply.ts';
 import { evaluateCall } from './calls.ts';
 import { evaluateIndexed } from './sums/evaluate-sum.ts';
-import { evaluateIntegral } from './integral.ts';
+import { evaluateIntegral } from './integrals/integral.ts';
 import type { Session } from './session.ts';
 
 const DEEPEST = 600;

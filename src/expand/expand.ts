@@ -5,7 +5,8 @@ import { addElements, isRational, multiplyElements, plainText } from '../series/
 import { assemble } from './assemble.ts';
 import { inCompound } from './compound.ts';
 import type { Expansion, ExpansionProblem } from './expansion.ts';
-import { type Direction, expandSide, type SideResult } from './side.ts';
+import type { Direction } from './open-side.ts';
+import { expandSide, type SideResult } from './side.ts';
 
 /**
  * The expansion of problem.function in problem.variable (a symbol, or a quantity like v/c taken as one) at the point, to `terms` terms or to `order`.

@@ -9,7 +9,7 @@ import { evaluate } from './evaluate.ts';
 import type { Expansion, ExpansionTerm, SmallProblem, SmallQuantity } from './expansion.ts';
 import { factorTree, type RawTerm, rawTerms } from './flatten.ts';
 import { openSession } from './session.ts';
-import { openContext } from './side.ts';
+import { openContext } from './open-side.ts';
 
 /**
  * Each quantity q becomes point + s^weight q, the function is expanded in s -> 0+, then s = 1: terms are blocks of equal weight, coefficients are homogeneous in the quantities.
@@ -62,7 +62,7 @@ function weighted(problem: SmallProblem, budget: Budget): Expansion {
     prefactor: null,
     terms,
     remainder: remainder ? { power: exactOf(c, remainder.power), log: remainder.log, scale: null } : null,
-    exact: remainder === null && !c.notes.subdominantDropped,
+    exact: remainder === null,
     divergent: c.notes.divergent && remainder !== null,
     oscillating: false,
     assumptions: [...new Set([...c.notes.assumptions, ...[...field.needed].filter((a) => !a.includes(LOCAL))])],
@@ -126,7 +126,7 @@ function iterated(problem: SmallProblem, budget: Budget): Expansion {
     prefactor: null,
     terms,
     remainder,
-    exact: remainder === null && !c.notes.subdominantDropped,
+    exact: remainder === null,
     divergent: c.notes.divergent && remainder !== null,
     oscillating: false,
     assumptions: [order, ...positive.map((a) => (a.kind === 'relation' && a.left.kind === 'symbol' ? `${a.left.name} > 0` : '')), ...c.notes.assumptions, ...field.needed],

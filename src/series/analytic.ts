@@ -106,9 +106,10 @@ export function compose(c: Context, coefficient: (k: number) => Multi | null, f:
   return new Series(f.element, composeTail(c, shifted, rest), unnamed);
 }
 
-/** The sum of infinitely many multiseries whose leading exponents in the element increase without bound. */
-export function sumOfSeries(c: Context, element: ScaleElement, part: (k: number) => Multi): Multi {
+/** The sum of multiseries whose leading exponents in the element increase without bound; it ends at the first k that does not exist. */
+export function sumOfSeries(c: Context, element: ScaleElement, part: (k: number) => Multi, exists: (k: number) => boolean = () => true): Multi {
   const stream = sumOfStreams(c, ringOf(c), (k) => {
+    if (!exists(k)) return null;
     const value = part(k);
     const first = value instanceof Series && value.element === element ? leading(c, value) : null;
     return { lead: first?.exponent ?? Q.ZERO, stream: streamIn(value, element) };

@@ -24,7 +24,7 @@ function reciprocalOf(c: Context, e: Element): Element {
 }
 
 /** f = coefficient * element^exponent * (1 + rest): the rest's stream. */
-function relativeRest(c: Context, f: Series, lead: Lead): Stream {
+export function relativeRest(c: Context, f: Series, lead: Lead): Stream {
   const factor = reciprocal(c, lead.coefficient);
   const down = negateElement(c, lead.exponent);
   return mapStream(dropTerms(f.stream, lead.index + 1), (t) => ({ ...t, exponent: addElements(c, t.exponent, down), coefficient: multiply(c, t.coefficient, factor) }));

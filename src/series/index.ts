@@ -7,7 +7,7 @@ export { integrate } from './integration.ts';
 export { type InverseFunction, inverse } from './inverse.ts';
 export { compareMonomials, decideSign, eventualSign, type Growth, growth, isKnownZero, isZero, leading, type Monomial, monomialOf, nextTerm, nextTermOrOrder } from './leading.ts';
 export { addElements, type Context, exactOf, isLiteralOne, isLiteralZero, isRational, type Lead, type Multi, multiplyElements, negateElement, type Notes, type Scale, type ScaleElement, Series, Stream, type Term, unnamed } from './multi.ts';
-export { monomialSeries, multiplyMonomials, orderSeries, raiseMonomial, truncate, type Truncation, unitMonomial } from './monomials.ts';
+export { beyondAllOrders, monomialSeries, multiplyMonomials, orderSeries, raiseMonomial, truncate, type Truncation, unitMonomial } from './monomials.ts';
 export { plainText } from './plain.ts';
 export { add, monomial, multiply, negate, scaleBy, shift, streamIn, subtract, sumOf } from './ring.ts';
 export { createScale, insertFormal, logarithmOf } from './scale.ts';
@@ -16,3 +16,5 @@ export { dropTerms, finiteStream, mapStream, prepend, takeTerms } from './stream
 export { integralTail } from './tail.ts';
 export { imaginaryPart, mapConstants, realPart } from './complex.ts';
 export { isOscillating, oscillatingParts } from './oscillation.ts';
+export { relativeRest as relativeTail } from './exponential.ts';
+export { powerTail as powerTailOf } from './tail.ts';

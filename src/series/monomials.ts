@@ -2,9 +2,10 @@
 import type { Element } from '../algebra/types.ts';
 import { type Expression, Q } from '../expression/index.ts';
 import { signOfExponent } from './exponent.ts';
-import { compareMonomials, isZero, type Monomial, monomialOf, nextTermOrOrder } from './leading.ts';
+import { exponential, logarithm } from './exponential.ts';
+import { compareMonomials, eventualSign, isZero, type Monomial, monomialOf, nextTermOrOrder } from './leading.ts';
 import { addElements, type Context, type Multi, multiplyElements, Series, unnamed } from './multi.ts';
-import { add, monomial, multiply } from './ring.ts';
+import { add, monomial, multiply, negate } from './ring.ts';
 import { finiteStream } from './stream.ts';
 
 export const unitMonomial: Monomial = { constant: Q.ONE, factors: [] };
@@ -41,6 +42,16 @@ export function orderSeries(c: Context, m: Monomial, exact: () => Expression = u
   let result = new Series(slowest.element, finiteStream([{ exponent: slowest.exponent, coefficient: Q.ONE, order: true }]), exact);
   for (const f of faster) result = new Series(f.element, finiteStream([{ exponent: f.exponent, coefficient: result }]), exact);
   return result;
+}
+
+/** O(exp(-log(large)^2)): smaller than every power of a quantity that grows without bound, larger than what is exponentially small in it. */
+export function beyondAllOrders(c: Context, large: Multi): Series {
+  const logarithm_ = logarithm(c, eventualSign(c, large) === -1 ? negate(c, large) : large);
+  const size = monomialOf(c, exponential(c, negate(c, multiply(c, logarithm_, logarithm_))));
+  const [first] = size?.factors ?? [];
+  if (!size || !first) throw new Error('an unbounded quantity without a scale');
+  first.element.beyond = true;
+  return orderSeries(c, size);
 }
 
 export interface Truncation {

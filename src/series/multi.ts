@@ -64,6 +64,8 @@ export interface ScaleElement {
   readonly depth: number;
   /** As a tree in t. */
   readonly expression: Expression;
+  /** Set where it bounds dropped parts that are smaller than every power: it is then shown as the next power. */
+  beyond?: true;
   /** Logarithm of the element, in slower elements; null where the scale does not hold it yet. */
   logarithm: Multi | null;
 }
@@ -106,8 +108,6 @@ export interface Notes {
   /** A step depended on t being positive: the other side needs its own computation. */
   sided: boolean;
   divergent: boolean;
-  /** Exponentially small parts were dropped. */
-  subdominantDropped: boolean;
   readonly assumptions: Set<string>;
 }
 

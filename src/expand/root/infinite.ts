@@ -6,7 +6,7 @@ import {
   divide, eventualSign, exponential, growth, isRational, isRealMulti, logarithm, type Monomial, monomialOf, type Multi, multiply, negate, power, scaleBy, Series, split, subtract,
 } from '../../series/index.ts';
 import { evaluate } from '../evaluate.ts';
-import { type Direction, openSide } from '../side.ts';
+import { type Direction, openSide } from '../open-side.ts';
 import type { Start } from './branches.ts';
 import { type Curve, separate } from './taylor.ts';
 

@@ -4,7 +4,7 @@ import { Declined } from '../../outcome.ts';
 import { add, insertFormal, isRational, monomial, type Multi, type ScaleElement, Series } from '../../series/index.ts';
 import { evaluate } from '../evaluate.ts';
 import { bind } from '../session.ts';
-import type { OpenSide } from '../side.ts';
+import type { OpenSide } from '../open-side.ts';
 
 /** F(t, unknown) on one side of the point. */
 export interface Curve {

@@ -3,7 +3,7 @@ import { build, type Expression, type IndexedNode, Q, substitute } from '../../e
 import { Declined } from '../../outcome.ts';
 import { exponential, type Multi, multiply, sumOf } from '../../series/index.ts';
 import type { Evaluate } from '../calls.ts';
-import { infinityOf } from '../integral.ts';
+import { infinityOf } from '../integrals/integral.ts';
 import type { Session } from '../session.ts';
 import { bernoulliNumbers } from './bernoulli.ts';
 import { eulerMaclaurin } from './euler-maclaurin.ts';

@@ -1,9 +1,11 @@
 /** Integral nodes whose limits move: the derivative in t is integrated term by term, and the constant is fixed by the limits. */
-import { children, type Expression, type IntegralNode, Q } from '../expression/index.ts';
-import { Declined } from '../outcome.ts';
-import { eventualSign, exactOf, growth, integrate, isKnownZero, isZero, type Multi, multiply, Series, split, subtract, theta, withExact } from '../series/index.ts';
-import type { Evaluate } from './calls.ts';
-import { bind, type Session } from './session.ts';
+import { children, type Expression, type IntegralNode, Q } from '../../expression/index.ts';
+import { Declined } from '../../outcome.ts';
+import { eventualSign, exactOf, growth, integrate, isKnownZero, isZero, type Multi, multiply, Series, split, subtract, theta, withExact } from '../../series/index.ts';
+import type { Evaluate } from '../calls.ts';
+import { bind, type Session } from '../session.ts';
+import { byMoments } from './moments.ts';
+import { laplaceForm, watson } from './watson.ts';
 
 export function evaluateIntegral(s: Session, e: IntegralNode, evaluate: Evaluate): Multi {
   const { context: c } = s;
@@ -17,7 +19,7 @@ export function evaluateIntegral(s: Session, e: IntegralNode, evaluate: Evaluate
     throw new Declined('no-expansion', 'The constant of the antiderivative is not known at this point; give the integral its limits.');
   }
   if (!e.lower || !e.upper) throw new Declined('bad-request', 'The integral has one limit only; write both.');
-  if (dependsOnBound(s, e.body, name)) throw new Declined('no-expansion', 'An integral whose integrand contains the variable is not expanded here; integrate first.');
+  if (dependsOnBound(s, e.body, name)) return parametric(s, e, name, e.lower, e.upper, evaluate);
   const upper = endOf(s, e.upper, evaluate);
   const lower = endOf(s, e.lower, evaluate);
   const above = upper.moving === null ? Q.ZERO : primitiveAt(s, e, name, upper.moving, evaluate);
@@ -31,6 +33,20 @@ export function evaluateIntegral(s: Session, e: IntegralNode, evaluate: Evaluate
     throw new Declined('no-expansion', one ? 'The integral diverges at the point; correct its limits.' : 'The constant of this integral between two moving limits is not known; split it.');
   }
   return withExact(total, () => ({ ...e, lower: limitTree(s, lower, e.lower as Expression), upper: limitTree(s, upper, e.upper as Expression) }));
+}
+
+/** Constant limits and the variable in the integrand. */
+function parametric(s: Session, e: IntegralNode, name: string, lower: Expression, upper: Expression, evaluate: Evaluate): Multi {
+  const low = infinityOf(lower);
+  const high = infinityOf(upper);
+  if (dependsOnBound(s, lower, '') || dependsOnBound(s, upper, '')) throw new Declined('no-expansion', 'An integral with the variable both in a limit and in the integrand is not expanded here; substitute so that only one of them moves.');
+  if (low === 1 || high === -1) throw new Declined('bad-request', 'The limits of the integral stand in the wrong order; exchange them.');
+  const moves = (tree: Expression): boolean => dependsOnBound(s, tree, name);
+  const from = low === 0 ? lower : null;
+  const to = high === 0 ? upper : null;
+  const form = laplaceForm(e.body, name, moves);
+  if (form && growth(s.context, evaluate(s, form.lambda)) === 'large') return watson(s, form, name, from, to, evaluate);
+  return byMoments(s, e.body, name, from, to, evaluate);
 }
 
 interface End {

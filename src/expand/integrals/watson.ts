@@ -1,0 +1,207 @@
+/**
+ * Laplace's method by Watson's lemma: integral of g(v) exp(-lambda phi(v)) with unbounded lambda, phi monotone on each piece.
+ * With phi(v0 + s) - phi(v0) = a s^p (1 + e(s)) the coefficients come from Lagrange's theorem without inverting phi:
+ * sum over powers n of Gamma((n+1)/p)/p * [s^n] (g (1+e)^(-(n+1)/p)) (a lambda)^(-(n+1)/p).
+ * Source: Olver, Asymptotics and Special Functions (1974), ch. 3, sections 3 and 8 (from memory).
+ */
+import type { Element } from '../../algebra/types.ts';
+import { build, dependsOn, type Expression, Q, substitute } from '../../expression/index.ts';
+import { Declined } from '../../outcome.ts';
+import {
+  add, addElements, beyondAllOrders, compareExponents, type Context, exponential, growth, isRational, isZero, leading, monomialOf, type Multi, multiply, multiplyElements, negate, power, powerTailOf, relativeTail, scaleBy,
+  Series, signOfExponent, type Stream, streamIn, subtract, sumOfSeries,
+} from '../../series/index.ts';
+import type { Evaluate } from '../calls.ts';
+import { type Direction, openSide } from '../open-side.ts';
+import type { Session } from '../session.ts';
+import { directionOn, type Range, regularOn } from './monotone.ts';
+
+/** exp(-lambda(t) phi(v)) g(v) c(t). */
+export interface LaplaceForm {
+  readonly front: Expression;
+  readonly lambda: Expression;
+  readonly phi: Expression;
+  readonly weight: Expression;
+}
+
+/** Reads the integrand as a Laplace form; null where variable and integration variable are mixed otherwise. `moves` tells whether a tree depends on the expansion variable. */
+export function laplaceForm(body: Expression, v: string, moves: (e: Expression) => boolean): LaplaceForm | null {
+  const front: Expression[] = [];
+  const weight: Expression[] = [];
+  const exponents: Expression[] = [];
+  const visit = (e: Expression, inverse: boolean): boolean => {
+    const put = (list: Expression[]): true => {
+      list.push(inverse ? build.power(e, -1) : e);
+      return true;
+    };
+    if (!dependsOn(e, v)) return put(front);
+    if (!moves(e)) return put(weight);
+    switch (e.kind) {
+      case 'negation':
+        front.push(build.number(-1));
+        return visit(e.operand, inverse);
+      case 'product':
+        return e.factors.every((f) => visit(f, inverse));
+      case 'quotient':
+        return visit(e.numerator, inverse) && visit(e.denominator, !inverse);
+      case 'power':
+        if (e.base.kind === 'constant' && e.base.name === 'e') {
+          exponents.push(inverse ? build.negation(e.exponent) : e.exponent);
+          return true;
+        }
+        return false;
+      case 'call':
+        if (e.function !== 'exp' || !e.args[0]) return false;
+        exponents.push(inverse ? build.negation(e.args[0]) : e.args[0]);
+        return true;
+      default:
+        return false;
+    }
+  };
+  if (!visit(body, false)) return null;
+  const mixed: { lambda: Expression[]; phi: Expression[] }[] = [];
+  const sort = (e: Expression, negative: boolean): boolean => {
+    if (e.kind === 'sum') return e.terms.every((t) => sort(t, negative));
+    if (e.kind === 'negation') return sort(e.operand, !negative);
+    const signed = negative ? build.negation(e) : e;
+    if (!dependsOn(e, v)) {
+      front.push(build.power(build.constant('e'), signed));
+      return true;
+    }
+    if (!moves(e)) {
+      weight.push(build.power(build.constant('e'), signed));
+      return true;
+    }
+    const lambda: Expression[] = [];
+    const phi: Expression[] = [build.number(negative ? 1 : -1)];
+    const split = (f: Expression, inverse: boolean): boolean => {
+      const value = inverse ? build.power(f, -1) : f;
+      if (!dependsOn(f, v)) lambda.push(value);
+      else if (!moves(f)) phi.push(value);
+      else if (f.kind === 'product') return f.factors.every((g) => split(g, inverse));
+      else if (f.kind === 'quotient') return split(f.numerator, inverse) && split(f.denominator, !inverse);
+      else if (f.kind === 'negation') {
+        phi.push(build.number(-1));
+        return split(f.operand, inverse);
+      } else return false;
+      return true;
+    };
+    if (!split(e, false)) return false;
+    mixed.push({ lambda, phi });
+    return true;
+  };
+  if (!exponents.every((e) => sort(e, false))) return null;
+  const [only] = mixed;
+  if (mixed.length !== 1 || !only) return null;
+  // Constants belong to phi: lambda is what moves.
+  const moving = only.lambda.filter(moves);
+  const constants = only.lambda.filter((f) => !moves(f));
+  return { front: build.product(...front), lambda: build.product(...moving), phi: build.product(...constants, ...only.phi), weight: build.product(...weight) };
+}
+
+/** The integral over (low, high), null for infinite ends. Throws Declined where the conditions of Watson's lemma are not proven. */
+export function watson(s: Session, form: LaplaceForm, v: string, low: Expression | null, high: Expression | null, evaluate: Evaluate): Multi {
+  const c = s.context;
+  const range: Range = { variable: v, low, high, field: c.field };
+  const lambda = evaluate(s, form.lambda);
+  const lead = monomialOf(c, lambda);
+  if (growth(c, lambda) !== 'large' || !lead) throw new Declined('no-expansion', 'The parameter in the exponent does not grow at the point; choose the point where it does.');
+  const positive = c.field.sign(lead.constant) === 1;
+  const phi = positive ? form.phi : build.negation(form.phi);
+  const large = positive ? lambda : negate(c, lambda);
+  const contains = (e: Expression): boolean => {
+    const below = low === null || c.field.sign(c.field.fromExpression(low)) === -1;
+    const above = high === null || c.field.sign(c.field.fromExpression(high)) === 1;
+    return below && above && dependsOn(e, v);
+  };
+  const direction = directionOn(range, phi);
+  if (direction === null && contains(phi)) {
+    const zero = build.number(0);
+    const turned = { ...form, phi, lambda: positive ? form.lambda : build.negation(form.lambda) };
+    return add(c, watson(s, turned, v, low, zero, evaluate), watson(s, turned, v, zero, high, evaluate));
+  }
+  if (direction === null) throw new Declined('no-expansion', 'The exponent of the integrand could not be shown to be monotone between the limits; split the integral at its extremum.');
+  const end = direction === 1 ? low : high;
+  if (end === null) throw new Declined('no-expansion', 'The integral diverges for large values of the parameter; correct its sign or limits.');
+  if (!regularOn(range, form.weight) || !regularOn(range, phi)) throw new Declined('no-expansion', 'The integrand could not be shown to be regular between the limits; split the integral.');
+  const far = direction === 1 ? high : low;
+  requireIntegrable(s, form.weight, phi, v, far, direction, evaluate);
+  const inner = openSide({ variable: build.symbol(v), point: end, assumptions: [] }, direction === 1 ? 'right' : 'left', c.budget);
+  const height = c.field.fromExpression(substitute(phi, v, end));
+  const own = inner.context;
+  const psi = subtract(own, evaluate(inner.session, inner.fromVariable(phi)), transfer(own, c, height));
+  const g = evaluate(inner.session, inner.fromVariable(form.weight));
+  const { sum, finite } = lagrange(c, own, psi, g, large);
+  const whole = finite && far === null;
+  if (!finite) c.notes.divergent = true;
+  const series = whole ? sum : multiply(c, sum, add(c, Q.ONE, beyondAllOrders(c, large)));
+  const front = evaluate(s, form.front);
+  const peak = isZero(c, height) ? Q.ONE : exponential(c, scaleBy(c, large, c.field.negate(height)));
+  return multiply(c, multiply(c, front, peak), series);
+}
+
+const transfer = (to: Context, from: Context, e: Element): Element => (isRational(e) ? e : to.field.fromExpression(from.field.toExpression(e)));
+
+/** g exp(-K phi) must be integrable at the far end for some K. */
+function requireIntegrable(s: Session, weight: Expression, phi: Expression, v: string, far: Expression | null, direction: 1 | -1, evaluate: Evaluate): void {
+  const { context: c } = s;
+  const symbol = build.symbol(v);
+  const side: Direction = far === null ? (direction === 1 ? 'inf' : '-inf') : direction === 1 ? 'left' : 'right';
+  const point = far ?? (direction === 1 ? 'inf' : '-inf');
+  for (const k of [1, 4]) {
+    const inner = openSide({ variable: symbol, point: point as Expression, assumptions: [] }, side, c.budget);
+    const distance = far === null ? build.power(symbol, 2) : build.difference(symbol, far);
+    const damped = build.product(weight, build.power(build.constant('e'), build.product(build.number(-k), phi)), distance);
+    const size = growth(inner.context, evaluate(inner.session, inner.fromVariable(damped)));
+    if (size === 'small' || size === 'zero') return;
+  }
+  throw new Declined('no-expansion', 'The integral could not be shown to converge; correct its integrand.');
+}
+
+/** sum over n of Gamma((n+1)/p)/p [s^n](g (1+e)^(-(n+1)/p)) (a lambda)^(-(n+1)/p). */
+function lagrange(c: Context, own: Context, psi: Multi, g: Multi, lambda: Multi): { readonly sum: Multi; readonly finite: boolean } {
+  if (!(psi instanceof Series) || psi.element !== own.scale.local) throw new Declined('no-expansion', 'The exponent of the integrand has no power series at its extremum; split the integral.');
+  const lead = leading(own, psi);
+  if (!lead || lead.coefficient instanceof Series || signOfExponent(own, lead.exponent) <= 0) throw new Declined('no-expansion', 'The exponent of the integrand has no power series at its extremum; split the integral.');
+  const p = lead.exponent;
+  const rest = relativeTail(own, psi, lead);
+  const weights = streamIn(g, own.scale.local);
+  // The exponents n that can occur: those of g times any power of 1 + e.
+  const support = productOf(own, weights, powerTailOf(own, rest, Q.MINUS_ONE));
+  const inverse = own.field.divide(Q.ONE, p);
+  const element = monomialOf(c, lambda)?.factors[0]?.element;
+  if (!element) throw new Error('an unbounded parameter without a scale');
+  const part = (k: number): Multi => {
+    const n = support.at(k);
+    if (!n) return Q.ZERO;
+    if (n.order) throw new Declined('no-expansion', 'An O-term stands inside the integral; integrate the terms before it.');
+    const order = multiplyElements(own, addElements(own, n.exponent, Q.ONE), inverse);
+    if (own.field.sign(order) !== 1) throw new Declined('no-expansion', 'The integral diverges at the end that matters most; correct it.');
+    const coefficient = coefficientAt(own, productOf(own, weights, powerTailOf(own, rest, own.field.negate(order))), n.exponent);
+    const value = own.field.multiply(own.field.multiply(coefficient, own.field.multiply(own.field.call('gamma', [order]), inverse)), own.field.power(lead.coefficient as Element, own.field.negate(order)));
+    return scaleBy(c, power(c, lambda, transfer(c, own, own.field.negate(order))), transfer(c, own, value));
+  };
+  const finite = rest.at(0) === null && weights.at(0) !== null && endsSoon(weights);
+  return { sum: sumOfSeries(c, element, part, (k) => support.at(k) !== null), finite };
+}
+
+function endsSoon(stream: Stream): boolean {
+  for (let k = 0; k < 40; k += 1) if (stream.at(k) === null) return true;
+  return false;
+}
+
+function productOf(c: Context, a: Stream, b: Stream): Stream {
+  return streamIn(multiply(c, new Series(c.scale.local, a, () => ({ kind: 'dots' })), new Series(c.scale.local, b, () => ({ kind: 'dots' }))), c.scale.local);
+}
+
+function coefficientAt(c: Context, stream: Stream, exponent: Element): Element {
+  for (let k = 0; ; k += 1) {
+    const term = stream.at(k);
+    if (!term) return Q.ZERO;
+    const sign = compareExponents(c, term.exponent, exponent);
+    if (sign > 0) return Q.ZERO;
+    if (sign < 0) continue;
+    if (term.coefficient instanceof Series) throw new Declined('no-expansion', 'Logarithms in the integrand at the end that matters most are not expanded; split the integral.');
+    return term.coefficient;
+  }
+}

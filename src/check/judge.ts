@@ -27,8 +27,6 @@ export interface Failed {
   readonly onlyOrder: boolean;
   /** Printed terms that are right before the first wrong one. */
   readonly matched: number;
-  /** What was judged, after decimals had been allowed for. */
-  readonly sum: Expression;
 }
 
 /** Judges `f relation side` at the point. Undecided where a zero test, a size or the time does not allow more. */
@@ -37,14 +35,15 @@ export function judge(f: Expression, side: Expression, relation: Relation, setti
   const leftMarked = hasMarks(f) ? takeApart(f, setting) : null;
   const truth = leftMarked ? leftMarked.kept : f;
   let sum = truncated.kept;
-  let lead = leading(setting, build.difference(truth, sum));
+  const plain = build.difference(truth, sum);
+  let lead = leading(setting, plain);
   const allowed = absorbDecimals(truth, truncated, lead, setting);
+  const difference = allowed.sum === sum ? plain : build.difference(truth, allowed.sum);
   sum = allowed.sum;
   lead = allowed.lead;
   if (lead.kind === 'undecided') return { kind: 'undecided', reason: lead.reason, needsTime: lead.needsTime };
   if (lead.kind === 'zero') return identity(truncated, relation, leftMarked);
-  const difference = build.difference(truth, sum);
-  const verdict = truncated.scale ? againstScale(truncated, truncated.scale, difference, setting) : againstLast(truncated, truth, sum, lead, setting);
+  const verdict = truncated.scale ? againstScale(truncated, truncated.scale, difference, setting) : againstLast(truncated, difference, lead, setting);
   if (verdict.kind === 'holds' && leftMarked) return withLeftMark(leftMarked, truncated, verdict, setting);
   if (verdict.kind === 'fails' && leftMarked && !refutes(leftMarked, lead, setting)) return { kind: 'undecided', reason: 'The left side is itself cut off before the terms that would decide it.', needsTime: false };
   if (verdict.kind === 'holds' && truncated.mark === 'none' && relation === '=') return { ...verdict, hint: { kind: 'approximation' } };
@@ -61,7 +60,7 @@ function againstScale(truncated: Truncated, scale: Expression, difference: Expre
   if (typeof size === 'object') return { kind: 'undecided', reason: size.undecided, needsTime: size.needsTime };
   const holds = truncated.mark === 'O' ? size !== 'larger' : size === 'smaller';
   const lead = leading(setting, difference);
-  if (!holds) return { kind: 'fails', failure: failureOf(truncated, difference, lead, setting), truncated };
+  if (!holds) return { kind: 'fails', failure: failureOf(truncated, lead, setting), truncated };
   const absorbed = truncated.terms.find((t) => {
     const reach = compare(setting, t.value, scale);
     return truncated.mark === 'O' ? reach === 'same' || reach === 'smaller' : reach === 'smaller';
@@ -72,26 +71,23 @@ function againstScale(truncated: Truncated, scale: Expression, difference: Expre
 }
 
 /** Dots, or no mark: the difference must be smaller than the last kept term. */
-function againstLast(truncated: Truncated, truth: Expression, sum: Expression, lead: Leading, setting: Setting): Judgement {
-  const difference = build.difference(truth, sum);
+function againstLast(truncated: Truncated, difference: Expression, lead: Leading, setting: Setting): Judgement {
   const reach = lastKept(truncated, setting);
   if (lead.kind === 'monomial' && reach) {
-    return compareSizes(lead.size, reach.last) > 0 ? { kind: 'holds', hint: null, truncated } : { kind: 'fails', failure: failureOf(truncated, difference, lead, setting), truncated };
+    return compareSizes(lead.size, reach.last) > 0 ? { kind: 'holds', hint: null, truncated } : { kind: 'fails', failure: failureOf(truncated, lead, setting), truncated };
   }
   const last = truncated.terms.at(-1);
   if (!last) return { kind: 'undecided', reason: 'No printed term was found.', needsTime: false };
   const size = compare(setting, difference, last.value);
   if (typeof size === 'object') return { kind: 'undecided', reason: size.undecided, needsTime: size.needsTime };
-  return size === 'smaller' ? { kind: 'holds', hint: null, truncated } : { kind: 'fails', failure: failureOf(truncated, difference, lead, setting), truncated };
+  return size === 'smaller' ? { kind: 'holds', hint: null, truncated } : { kind: 'fails', failure: failureOf(truncated, lead, setting), truncated };
 }
 
-function failureOf(truncated: Truncated, difference: Expression, lead: Leading, setting: Setting): Failed {
+function failureOf(truncated: Truncated, lead: Leading, setting: Setting): Failed {
   const found = lead.kind === 'monomial' ? { size: lead.size, coefficient: lead.coefficient } : null;
   const sizes = truncated.terms.map((t) => leading(setting, t.value));
   const right = sizes.map((s) => found !== null && s.kind === 'monomial' && compareSizes(s.size, found.size) < 0);
-  const sum = truncated.kept;
-  void difference;
-  return { difference: found, onlyOrder: truncated.scale !== null && right.length > 0 && right.every(Boolean), matched: right.filter(Boolean).length, sum };
+  return { difference: found, onlyOrder: truncated.scale !== null && right.length > 0 && right.every(Boolean), matched: right.filter(Boolean).length };
 }
 
 /** A cut-off left side: its own remainder must be covered by the right one. */

@@ -29,8 +29,21 @@ export type Leading =
   | { readonly kind: 'other' }
   | { readonly kind: 'undecided'; readonly reason: string; readonly needsTime: boolean };
 
+/** Leading terms already found, by setting and by tree. */
+const found = new WeakMap<Setting, WeakMap<Expression, Leading>>();
+
 /** The leading term of a function at the point. */
 export function leading(setting: Setting, f: Expression): Leading {
+  const known = found.get(setting) ?? new WeakMap<Expression, Leading>();
+  found.set(setting, known);
+  const before = known.get(f);
+  if (before) return before;
+  const result = computeLeading(setting, f);
+  known.set(f, result);
+  return result;
+}
+
+function computeLeading(setting: Setting, f: Expression): Leading {
   const direct = monomialSize(setting, f);
   if (direct) return direct;
   const result = expandIn(setting, f, { terms: 1 });

@@ -19,8 +19,8 @@ export interface DifferenceProblem {
   readonly measure: Measure;
   /** A zero of the function that the approximation shares, or a removable singularity: the pieces begin there. */
   readonly through?: Rational;
-  /** Bits that cancel between function and approximation, roughly: -log2 of the error to be proved. */
-  readonly cancelled: number;
+  /** Bits that cancel between function and approximation, roughly: -log2 of the error to be proved. Found by sampling where it is not given. */
+  readonly cancelled?: number;
   /** Ratio of upper to lower bound to stop at; default 1.001. */
   readonly settled?: number;
   readonly budget: Budget;
@@ -44,7 +44,7 @@ const MOST_CUTS = 40;
 export const boundDifference = (problem: DifferenceProblem): Outcome<DifferenceBound> => attempt(() => difference(problem));
 
 function difference(problem: DifferenceProblem): DifferenceBound {
-  const precision = 72 + 2 * Math.max(0, Math.ceil(problem.cancelled));
+  const precision = 72 + 2 * Math.max(0, Math.ceil(problem.cancelled ?? cancelledBits(problem)));
   const n = ballNumbers(precision, new Map());
   const { r } = n;
   const { through, low, high, measure, budget } = problem;
@@ -83,6 +83,25 @@ function difference(problem: DifferenceProblem): DifferenceBound {
     pieces += result.pieces;
   }
   return { upper: real.upper(upper), lower: real.lower(lower), pieces, precision };
+}
+
+/** -log2 of the largest difference at a few arguments, in the measure; only the working precision rests on it. */
+function cancelledBits({ function: f, approximation, variable, low, high, measure }: DifferenceProblem): number {
+  for (let precision = 192; precision <= 3072; precision *= 2) {
+    const n = ballNumbers(precision, new Map());
+    let largest = 0;
+    let blurred = false;
+    for (let k = 0; k <= 8; k += 1) {
+      const x = Q.add(low, Q.multiply(Q.subtract(high, low), Q.rational(2 * k + 1, 19)));
+      const y = remainderAt(n.r.fromRational(x), { expansion: { function: f } as Expansion, sum: approximation }, n, { variable, measure });
+      if (y === null) continue;
+      if (n.r.containsZero(y) && !n.r.isZero(y)) blurred = true;
+      else largest = Math.max(largest, Math.abs(real.toDouble(y)));
+    }
+    if (largest > 0) return Math.max(8, -Math.log2(largest));
+    if (!blurred) return 64;
+  }
+  return 1024;
 }
 
 /** A one-sided model that starts at the shared zero and reaches as far towards `end` as it can be proved tight. */

@@ -1,17 +1,21 @@
 /** Models of f, of the sum and of the remainder on a segment. */
-import { build, dependsOn, type Expression, Q, type Rational, substitute } from '../expression/index.ts';
+import { build, type Expression, Q, type Rational, substitute } from '../expression/index.ts';
 import { type Expansion, partialSum } from '../expand/index.ts';
 import { describe } from '../functions/index.ts';
 import { Declined } from '../outcome.ts';
 import { type LogModel, logModelOfTree, type Model, type ModelArithmetic, modelArithmetic, rationalOf } from '../rigorous/index.ts';
 import type { Numbers } from './numbers.ts';
 import { isExactlyZero, type Segment } from './region.ts';
+import { envelopeModel } from './enveloping.ts';
+import { rewriteCall } from './rewrite.ts';
 import { specialModel } from './special.ts';
 
 /** A model in s on a sub-interval of its unit domain. */
 export interface Local<T> {
   readonly m: ModelArithmetic<T>;
   readonly f: LogModel<T>;
+  /** The model of the variable itself. */
+  readonly leaf: Model<T>;
   /** s in [from, to]. */
   readonly from: T;
   readonly to: T;
@@ -37,8 +41,7 @@ export function modelOf<T>(e: Expression, n: Numbers<T>, m: ModelArithmetic<T>, 
 export function logModelOf<T>(e: Expression, n: Numbers<T>, m: ModelArithmetic<T>, variable: string, leaf: Model<T>, vanishes?: (e: Expression) => boolean, check?: () => void): LogModel<T> | null {
   const environment = new Map([...parameterModels(n, m), [variable, leaf] as const]);
   if (environment.size > PARAMETER_LIMIT) return null;
-  const varying = (tree: Expression): boolean => dependsOn(tree, variable);
-  return logModelOfTree(e, { m, trees: n.trees, real: n.r, describe, environment, vanishes, check, call: (id, args, models) => specialModel(id, args, models, n, m, (tree) => !varying(tree)) });
+  return logModelOfTree(e, { m, trees: n.trees, real: n.r, describe, environment, vanishes, check, call: (id, args, models, isConstant) => envelopeModel(id, args, models, n, m) ?? specialModel(id, args, models, n, m, isConstant), rewrite: (id, args, models) => rewriteCall(id, args, models, n, m) });
 }
 
 /** The least q that makes every power of the expansion a whole multiple of 1/q; null where a power is not a rational number. */
@@ -73,7 +76,7 @@ export function localModel<T>(segment: Segment, to: Expression | null, n: Number
     const nearValue = near === null ? null : n.value(near);
     const ratio = nearValue === null ? r.zero : r.divide(start, nearValue);
     const from = ratio === null ? null : q === 1 ? ratio : r.root(r.maximum(ratio, r.zero), q);
-    return from === null ? null : { m, f, from, to: r.one, scale: r.absolute(scale), denominator: q, sign: r.isPositive(scale) ? 1 : -1 };
+    return from === null ? null : { m, f, leaf, from, to: r.one, scale: r.absolute(scale), denominator: q, sign: r.isPositive(scale) ? 1 : -1 };
   }
   const centreTree = segment.local === 'lower' ? segment.lower : segment.upper;
   const farTree = to ?? (segment.local === 'lower' ? segment.upper : segment.lower);
@@ -89,7 +92,7 @@ export function localModel<T>(segment: Segment, to: Expression | null, n: Number
   const f = logModelOf(segment.expansion.function, n, m, variable, leaf, vanishes, check);
   if (f === null) return null;
   const sign = segment.expansion.side === 'left' ? (sideSign > 0 ? -1 : 1) : sideSign;
-  return { m, f, from: r.zero, to: r.one, scale, denominator: q, sign };
+  return { m, f, leaf, from: r.zero, to: r.one, scale, denominator: q, sign };
 }
 
 const substitutePoint = (e: Expression, variable: string, point: Expression): Expression => substitute(e, variable, point);

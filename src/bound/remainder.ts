@@ -3,7 +3,7 @@ import { build, type Expression, freeSymbols, Q, type Rational } from '../expres
 import type { Expansion } from '../expand/index.ts';
 import { Declined } from '../outcome.ts';
 import { type Ball, type LogModel, logRange, type Model, real } from '../rigorous/index.ts';
-import { denominatorOf, localModel, remainderAtPoint, sumOf, type Local, modelOf } from './local.ts';
+import { denominatorOf, type Local, localModel, logModelOf, remainderAtPoint, sumOf } from './local.ts';
 import { ballNumbers, doubles, type Numbers, type ParameterBalls } from './numbers.ts';
 import { type PieceTask, refinePieces, remainderAt } from './pieces.ts';
 import { provenPlace } from './singular.ts';
@@ -132,8 +132,15 @@ function run<T>(n: Numbers<T>, segments: readonly Segment[], problem: BoundProbl
       tasks.push(task);
       continue;
     }
-    const near = segment.atPoint ? atPoint(segment, n, problem, variable, lower, check, memory) : atInfinity(segment, sum, n, problem, variable, lower, check);
-    if (near === null) return null;
+    const near =
+      (segment.atPoint ? atPoint(segment, n, problem, variable, lower, check, memory) : null) ?? byDifference(segment, sum, n, problem, variable, lower, check);
+    if (near === null) {
+      // Nothing is known at the local end; where the interval does not reach it, pieces serve the whole.
+      const task = reachesLocalEnd(segment) ? null : wholeTask(segment, sum, n);
+      if (task === null) return null;
+      tasks.push(task);
+      continue;
+    }
     if (near.kind === 'unbounded') return { upper: null, lower: n.toBall(r.zero) ?? real.ZERO, steps: near.steps, place: near.place, unbounded: true, method: 'leading term of the remainder' };
     raise(near.lower);
     upper = r.upperEnd(r.maximum(upper, near.upper));
@@ -335,37 +342,50 @@ function cutSegment(segment: Segment, cut: number): { readonly near: Segment; re
     : { near: { ...segment, lower: middle }, rest: { ...segment, upper: middle, local: 'none', atPoint: false } };
 }
 
-/** An infinite end that is not the point of expansion: f and the sum by models in 1/x. */
-function atInfinity<T>(segment: Segment, sum: Expression, n: Numbers<T>, problem: BoundProblem, variable: string, lower: T, check: () => void): Near<T> | Unbounded | null {
+/** The local end belongs to the segment: infinity itself, or the finite point. */
+function reachesLocalEnd(segment: Segment): boolean {
+  const { point } = segment.expansion;
+  if (segment.atPoint && (point === 'inf' || point === '-inf')) return (segment.local === 'upper' ? segment.upper : segment.lower) === null;
+  return true;
+}
+
+/** f and the sum by models at the local end and their difference, coarse: for infinite ends that are not the point, and for expansions with a prefactor or on another scale. */
+function byDifference<T>(segment: Segment, sum: Expression, n: Numbers<T>, problem: BoundProblem, variable: string, lower: T, check: () => void): Near<T> | Unbounded | null {
   const { r } = n;
-  for (let cut = 0; cut < 10; cut += 1) {
+  const settled = (x: T): boolean => !r.isPositive(r.subtract(x, lower));
+  for (let cut = 0; cut < 12; cut += 1) {
     const part = cutSegment(segment, cut);
-    for (const q of [1, 2, 3]) {
+    for (const q of [1, 2, 3, 4]) {
+      check();
       const local = localModel(part.near, null, n, variable, 30, q, check);
       if (local === null) continue;
-      const leafStart = part.near.local === 'upper' ? part.near.lower : part.near.upper;
-      const start = leafStart && n.value(leafStart);
-      const s = start && modelOf(sum, n, local.m, variable, local.m.polynomial([start], -q), undefined, check);
-      if (!s) continue;
-      const [f, ...logs] = local.f;
-      if (f === undefined || logs.length > 0) continue;
-      const difference = local.m.subtract(f, s);
-      const g = problem.measure === 'absolute' ? difference : local.m.divide(difference, f);
+      const s = logModelOf(sum, n, local.m, variable, local.leaf, undefined, check);
+      if (s === null) continue;
+      const difference = Array.from({ length: Math.max(local.f.length, s.length) }, (_, j) => local.m.subtract(local.f[j] ?? local.m.constant(r.zero), s[j] ?? local.m.constant(r.zero)));
+      const [main, ...logs] = difference;
+      const [f, ...logsOfF] = local.f;
+      if (main === undefined || f === undefined) continue;
+      const rest = part.rest === null ? null : wholeTask(part.rest, sum, n);
+      const done = (upper: T, found: T): Near<T> => ({ kind: 'bounded', upper, lower: r.lowerEnd(r.maximum(lower, found)), rest, steps: (show) => [`At the local end f and the sum are enclosed separately: their difference is at most ${show(upper)} there.`] });
+      if (logs.length > 0 || logsOfF.length > 0) {
+        const coarse = withLogarithms(r, difference, local.f, problem.measure);
+        if (coarse === null) continue;
+        if (settled(coarse) || cut === 11) return done(coarse, r.zero);
+        break;
+      }
+      const g = problem.measure === 'absolute' ? main : local.m.divide(main, f);
       if (g === null) continue;
       if (g.valuation < 0) {
         const lead = g.coefficients[0];
         if (lead === undefined || r.containsZero(lead)) continue;
         const infinity = build.constant('infinity');
-        return { kind: 'unbounded', place: segment.upper === null ? infinity : build.negation(infinity), steps: ['f - sum grows without bound at the infinite end of the interval.'] };
+        const place = segment.upper === null ? infinity : segment.lower === null ? build.negation(infinity) : pointExpression(segment);
+        return { kind: 'unbounded', place, steps: ['f - sum grows without bound at the end of the interval.'] };
       }
       const result = supremumOfModel(r, g, { from: local.from, to: local.to, floor: lower, slack: SLACK / 4, check });
-      return {
-        kind: 'bounded',
-        upper: result.upper,
-        lower: result.lower,
-        rest: part.rest === null ? null : wholeTask(part.rest, sum, n),
-        steps: (show) => [`At the infinite end, in 1/x: at most ${show(result.upper)}.`],
-      };
+      const limit = r.multiply(r.maximum(lower, result.lower), r.fromRational({ num: BigInt(Math.round(SETTLED * 2 ** 30) - 2 ** 19), den: 1n << 30n }));
+      if (!r.isPositive(r.subtract(result.upper, limit)) || cut === 11) return done(result.upper, result.lower);
+      break;
     }
   }
   return null;

@@ -7,6 +7,7 @@
 import { build, type Expression } from '../expression/index.ts';
 import { describe } from '../functions/index.ts';
 import { type Ball, complex, type ComplexBall, enclose, interval, type Model, type ModelArithmetic, real } from '../rigorous/index.ts';
+import { polygammaSeries } from './gammaSeries.ts';
 import type { Numbers } from './numbers.ts';
 
 /** Where f is analytic in its varying argument: everywhere, off (-inf, end], or off [end, inf). */
@@ -34,14 +35,11 @@ function domainOf(id: string, args: readonly Expression[], index: number): Domai
     case 'airyAiPrime':
     case 'airyBiPrime':
       return entire;
-    case 'gamma':
     case 'logGamma':
-    case 'digamma':
     case 'cosIntegral':
     case 'coshIntegral':
     case 'expIntegralEi':
       return offLeft(0);
-    case 'polygamma':
     case 'expIntegralE':
     case 'besselY':
     case 'besselK':
@@ -101,8 +99,7 @@ export function specialModel<T>(id: string, args: readonly Expression[], models:
   const index = args.findIndex((arg) => !isConstant(arg));
   const argument = models[index];
   if (argument === undefined || args.filter((arg) => !isConstant(arg)).length !== 1) return null;
-  const shifted = shiftedGamma(id, args, models, index, n, m, isConstant);
-  if (shifted !== null) return shifted;
+  if (id === 'digamma' || id === 'polygamma') return polygammaModel(id, args, argument, n, m);
   const domain = domainOf(id, args, index);
   const u = m.regular(argument);
   if (domain === null || u === null || !describe(id)?.enclose) return null;
@@ -156,18 +153,7 @@ function composed<T>(series: Series, offset: Model<T>, D: number, n: Numbers<T>,
   if (!size || !real.isNonNegative(size)) return null;
   const factor = n.fromBall(real.upperEnd(size));
   const unit = r.union(r.negate(r.one), r.one);
-  const last = m.powerInteger({ valuation: offset.valuation, coefficients: [], tail: offset.range, range: offset.range }, K);
-  if (last === null) return null;
-  const tail = r.multiply(last.range, r.multiply(factor, unit));
-  let value: Model<T> = { valuation: offset.valuation * K, coefficients: [], tail, range: tail };
-  let sum: Model<T> | null = null;
-  for (let k = K - 1; k >= 0; k -= 1) {
-    const constant = m.constant(n.fromBall(series.coefficients[k] ?? real.ZERO));
-    sum = sum === null ? constant : m.add(constant, m.multiply(sum, offset));
-  }
-  if (sum === null) return null;
-  value = m.add(sum, value);
-  return value;
+  return hornerWithTail(series.coefficients.map((c) => n.fromBall(c)), r.multiply(factor, unit), offset, n, m);
 }
 
 function seriesOf(id: string, parameters: readonly ComplexBall[], index: number, centre: Ball, radius: number, precision: number, length: number): Series | null {
@@ -253,35 +239,30 @@ function maximumOnCircle(at: (z: ComplexBall, bits: number) => ComplexBall | nul
   return null;
 }
 
-/** gamma(u) = gamma(u + k)/(u (u+1) ...), and the same for its logarithmic derivatives, until u + k is well to the right of the poles. */
-function shiftedGamma<T>(id: string, args: readonly Expression[], models: readonly Model<T>[], index: number, n: Numbers<T>, m: ModelArithmetic<T>, isConstant: (e: Expression) => boolean): Model<T> | null {
+/** psi and its derivatives by Hurwitz zeta values; the argument must stay positive. */
+function polygammaModel<T>(id: string, args: readonly Expression[], argument: Model<T>, n: Numbers<T>, m: ModelArithmetic<T>): Model<T> | null {
   const { r } = n;
-  const u = models[index];
-  if (!['gamma', 'digamma', 'polygamma'].includes(id) || u === undefined || u.valuation < 0) return null;
-  const order = id === 'polygamma' ? args[0] : build.number(0);
-  if (index !== (id === 'polygamma' ? 1 : 0) || order?.kind !== 'number' || order.value.den !== 1n || order.value.num < 0n || order.value.num > 40n) return null;
-  const range = m.rangeOf(u);
-  if (range === null) return null;
-  const low = r.toDouble(r.lowerEnd(range));
-  const width = r.toDouble(r.upperEnd(range)) - low;
-  // Far enough from the poles that the disc needed is free of them.
-  const steps = Math.ceil(Math.max(1, 2 * width) - low);
-  if (!(steps > 0) || steps > 60) return null;
-  const moved = m.add(u, m.constant(r.fromInteger(steps)));
-  const far = specialModel(id, args, models.map((f, k) => (k === index ? moved : f)), n, m, isConstant);
-  if (far === null) return null;
-  let value: Model<T> | null = far;
-  for (let k = 0; k < steps && value !== null; k += 1) {
-    const factor = m.add(u, m.constant(r.fromInteger(k)));
-    if (id === 'gamma') value = m.divide(value, factor);
-    else {
-      // psi^(j)(x) = psi^(j)(x+1) - (-1)^j j!/x^(j+1).
-      const j = Number(order.value.num);
-      let factorial = r.one;
-      for (let i = 2; i <= j; i += 1) factorial = r.multiply(factorial, r.fromInteger(i));
-      const pole = m.powerInteger(factor, -(j + 1));
-      value = pole && m.subtract(value, m.scale(pole, j % 2 === 0 ? factorial : r.negate(factorial)));
-    }
-  }
-  return value;
+  const [order] = args;
+  const degree = id === 'digamma' ? 0 : order?.kind === 'number' && order.value.den === 1n ? Number(order.value.num) : -1;
+  const u = m.regular(argument);
+  if (u === null || degree < 0 || degree > 60) return null;
+  const hull = r.union(u.range, u.coefficients[0] ?? r.zero);
+  const [centre, lowest] = [n.toBall(u.coefficients[0] ?? r.zero), n.toBall(r.lowerEnd(hull))];
+  if (centre === null || lowest === null || !real.isPositive(lowest)) return null;
+  const precision = n.precision <= 53 ? 64 : n.precision;
+  const series = polygammaSeries(degree, centre, lowest, precision, m.length);
+  if (series === null) return null;
+  const offset = withoutConstant(m, u);
+  return hornerWithTail(series.coefficients.map((c) => n.fromBall(c)), n.fromBall(series.remainder), offset, n, m);
+}
+
+/** sum a_k d^k + remainder d^K. */
+function hornerWithTail<T>(coefficients: readonly T[], remainder: T, offset: Model<T>, n: Numbers<T>, m: ModelArithmetic<T>): Model<T> | null {
+  const K = coefficients.length;
+  let sum: Model<T> = m.constant(n.r.zero);
+  for (let k = K - 1; k >= 0; k -= 1) sum = m.add(m.constant(coefficients[k] ?? n.r.zero), m.multiply(sum, offset));
+  const last = m.powerInteger({ valuation: offset.valuation, coefficients: [], tail: offset.range, range: offset.range }, K);
+  if (last === null) return null;
+  const tail = n.r.multiply(last.range, remainder);
+  return m.add(sum, { valuation: offset.valuation * K, coefficients: [], tail, range: tail });
 }

@@ -21,7 +21,9 @@ export interface ModelTreeContext<T> {
   /** Proof that a tree has the value zero at s = 0, where its enclosure there contains zero but is not exactly zero. */
   readonly vanishes?: (e: Expression) => boolean;
   /** A model of a call that is not elementary and has no definition, from its argument models: supplied by the room that knows the function. */
-  readonly call?: (id: string, args: readonly Expression[], models: readonly Model<T>[]) => Model<T> | null;
+  readonly call?: (id: string, args: readonly Expression[], models: readonly Model<T>[], isConstant: (e: Expression) => boolean) => Model<T> | null;
+  /** An identity for a call that suits the place of its arguments; what it returns is modelled instead. */
+  readonly rewrite?: (id: string, args: readonly Expression[], models: readonly Model<T>[]) => Expression | null;
   readonly check?: () => void;
   /** Functions being modelled through their derivatives, to end circles. */
   readonly deriving?: ReadonlySet<string>;
@@ -187,7 +189,9 @@ export function logModelOfTree<T>(e: Expression, context: ModelTreeContext<T>): 
     const described = context.describe?.(id);
     if (id === 'atan2' && models[1]) return one(angle(first, models[1]));
     if (described?.definition) return visit(described.definition(args));
-    return one(byDerivative(id, args, models, node) ?? context.call?.(id, args, models) ?? null);
+    const rewritten = context.rewrite?.(id, args, models);
+    if (rewritten) return visit(rewritten);
+    return one(byDerivative(id, args, models, node) ?? context.call?.(id, args, models, isConstant) ?? null);
   };
   const signOnDomain = (f: Model<T>): 1 | -1 | null => {
     const r = context.real;

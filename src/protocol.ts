@@ -63,6 +63,8 @@ export interface FitRequest extends CommonRequest {
   readonly contraction?: 'any' | 'none' | 'fma';
   readonly method?: 'minimax' | 'taylor' | 'economized' | 'rational';
   readonly pieces?: number | 'auto';
+  /** Code as a function (default) or as one expression in the variable. */
+  readonly result?: 'function' | 'expression';
 }
 
 export interface GuardRequest extends CommonRequest {
@@ -172,6 +174,8 @@ export interface ExpandAnswer {
   readonly left?: ExpandAnswer;
   readonly branches?: readonly ExpandAnswer[];
   readonly value?: { readonly low: string; readonly high: string };
+  /** How the value of a definite integral was enclosed. */
+  readonly proof?: readonly string[];
   /** What was understood: function, variable, point, and where each came from. */
   readonly reading?: ReadingAnswer;
   /** Samples of function and partial sum over the interval, doubles, for drawing only. */
@@ -256,6 +260,10 @@ export interface FitAnswer {
   readonly code: string;
   readonly taylorDegree: number | null;
   readonly assumptions?: readonly string[];
+  /** The lines that the code needs at the head of its file; `code` has them in front. */
+  readonly imports?: readonly string[];
+  /** The polynomial is in x - centre, a float; absent for 0. */
+  readonly centre?: string;
   readonly operations?: { readonly multiplications: number; readonly additions: number; readonly fused: number };
 }
 

@@ -54,6 +54,7 @@ const SPECIFIC: Readonly<Record<Request['ask'], Readonly<Record<string, Check>>>
     form: oneOf('horner', 'estrin'),
     contraction: oneOf('any', 'none', 'fma'),
     method: oneOf('minimax', 'taylor', 'economized', 'rational'),
+    result: oneOf('function', 'expression'),
     pieces: (v) => (v === 'auto' ? null : count(1, 1000)(v)),
   },
   guard: {

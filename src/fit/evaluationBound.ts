@@ -1,57 +1,150 @@
-/** The rounding error of an evaluation form over an interval, in the measure of a fit: a sum of pieces, each with its own binades. */
-import { build, type Expression, Q, type Rational } from '../expression/index.ts';
-import { describe } from '../functions/index.ts';
+/** The rounding error of a program over an interval: a list of pieces, each with its own binades, and what follows from them in each measure. */
+import { Q, type Rational } from '../expression/index.ts';
 import type { Budget } from '../outcome.ts';
-import { encloseInterval, type Interval, interval } from '../rigorous/index.ts';
-import { evaluationError } from './evaluationError.ts';
-import type { FloatFormat } from './format.ts';
+import { type Interval, interval } from '../rigorous/index.ts';
+import { approximateValue, evaluationError } from './evaluationError.ts';
+import { ulpExponent } from './format.ts';
+import type { Arithmetic, Program } from './program.ts';
 
-export interface EvaluationBound {
-  /** sup |computed - p|. */
-  readonly absolute: number;
-  /** sup |computed - p| / |p| over arguments with |p| not below the smallest normal numbers; Infinity where no such bound is known. */
-  readonly relative: number;
+export interface ErrorPiece {
+  readonly x: Interval;
+  /** Range of the exact value of the program on the piece. */
+  readonly value: Interval;
+  /** |computed - exact| on the piece. */
+  readonly error: number;
 }
 
-const PIECES = 96;
-/** Halvings towards a zero of the polynomial: beyond, the relative bound of the last product serves. */
-const HALVINGS = 40;
+const PIECES = 64;
 
-/** Pieces that grow with the distance from `centre` where it lies inside, so that each piece sees one or two binades. */
-function pieces(low: number, high: number, centre: number): Interval[] {
+/** Arguments nearer to the centre than this are the centre itself. */
+function nearest(centre: Rational, { operations }: Arithmetic): number {
+  return Q.isZero(centre) ? 2 ** operations.emin : 2 ** (ulpExponent(centre, operations) - 1);
+}
+
+/** Pieces that grow with the distance from `centre` where it lies inside, so that each sees one or two binades. */
+function arguments_(low: number, high: number, centre: number, least: number): Interval[] {
   const list: Interval[] = [];
   const cut = (a: number, b: number, count: number): void => {
     for (let k = 0; k < count; k += 1) list.push({ lo: k === 0 ? a : a + ((b - a) * k) / count, hi: k === count - 1 ? b : a + ((b - a) * (k + 1)) / count });
   };
-  if (centre < low || centre > high) cut(low, high, PIECES);
-  else {
-    for (const end of [low, high]) {
-      if (end === centre) continue;
-      let far = end;
-      for (let k = 0; k < HALVINGS; k += 1) {
-        const near = k === HALVINGS - 1 ? centre : centre + (far - centre) / 2;
-        cut(Math.min(near, far), Math.max(near, far), k === 0 ? PIECES / 2 : k < 3 ? PIECES / 4 : 6);
-        far = near;
-      }
+  if (centre < low || centre > high) {
+    cut(low, high, PIECES);
+    return list;
+  }
+  for (const end of [low, high]) {
+    let far = end;
+    for (let k = 0; Math.abs(far - centre) > least; k += 1) {
+      const near = centre + (far - centre) / 2;
+      cut(Math.min(near, far), Math.max(near, far), k === 0 ? PIECES / 2 : k < 3 ? PIECES / 4 : k < 8 ? 6 : k < 24 ? 2 : 1);
+      far = near;
     }
+    if (far !== centre && Q.isZero(Q.fromDouble(centre))) list.push({ lo: Math.min(centre, far), hi: Math.max(centre, far) });
+  }
+  return list.sort((a, b) => a.lo - b.lo);
+}
+
+export interface PieceOptions {
+  readonly low: Rational;
+  readonly high: Rational;
+  /** The zero of the function that the program keeps, or a place that lies outside. */
+  readonly centre: Rational;
+  /** Also cut where the value passes a power of two. */
+  readonly binades: boolean;
+}
+
+/** Sound for every float argument in [low, high]; throws Declined where the evaluation can overflow or divide by zero. */
+export function errorPieces(program: Program, variable: string, arithmetic: Arithmetic, options: PieceOptions, budget: Budget): ErrorPiece[] {
+  // Outward: the pieces cover the whole interval.
+  const [a, b] = [interval.fromRational(options.low).lo, interval.fromRational(options.high).hi];
+  const list: ErrorPiece[] = [];
+  const add = (x: Interval): void => {
+    budget.check();
+    const { exact, absolute } = evaluationError(program, variable, x, arithmetic);
+    list.push({ x, value: exact, error: absolute });
+  };
+  const value = (x: number): number => Math.abs(approximateValue(program, variable, x));
+  for (const x of arguments_(a, b, Q.toDouble(options.centre), nearest(options.centre, arithmetic))) {
+    const cuts = options.binades ? binadeCuts(value, x, arithmetic.result.emin) : [];
+    const ends = [x.lo, ...cuts, x.hi];
+    for (let k = 0; k + 1 < ends.length; k += 1) add({ lo: ends[k] ?? x.lo, hi: ends[k + 1] ?? x.hi });
   }
   return list;
 }
 
-/** Sound for every float argument in [low, high]; throws Declined where the evaluation can overflow or divide by zero. */
-export function evaluationBound(tree: Expression, variable: string, low: Rational, high: Rational, centre: Rational, format: FloatFormat, budget: Budget): EvaluationBound {
-  let absolute = 0;
-  let relative = 0;
-  // Outward: the pieces cover the whole interval.
-  const [a, b] = [interval.fromRational(low).lo, interval.fromRational(high).hi];
-  for (const piece of pieces(a, b, Q.toDouble(centre))) {
-    budget.check();
-    const bound = evaluationError(tree, variable, piece, format);
-    absolute = Math.max(absolute, bound.absolute);
-    // A sharper enclosure of the value makes the relative bound of a piece sharper.
-    const value = encloseInterval(tree.kind === 'call' ? build.sum(tree) : tree, new Map([[variable, piece]]), describe);
-    const least = Math.max(interval.leastSize(bound.exact), value ? interval.leastSize(value) : 0);
-    relative = Math.max(relative, Math.min(bound.relative, least > 0 ? interval.up(bound.absolute / least) : Infinity));
+/** Relative width of the sliver that is cut out around a power of two: above the uncertainty of double arithmetic. */
+const SLIVER = 2 ** -44;
+
+/** Arguments just before and after the one where the value passes a power of two; only places to cut, no proof rests on them. */
+function binadeCuts(value: (x: number) => number, { lo, hi }: Interval, emin: number): number[] {
+  const [from, to] = [value(lo), value(hi)];
+  const [small, large] = from < to ? [from, to] : [to, from];
+  if (!(large < Infinity) || large < 2 ** emin) return [];
+  const cuts: number[] = [];
+  const locate = (level: number): number => {
+    let [x, y, fx, fy] = [lo, hi, from - level, to - level];
+    for (let k = 0; k < 40; k += 1) {
+      // Regula falsi, its stale end halved in weight (Illinois variant).
+      const next = x + (y - x) * (fx / (fx - fy));
+      if (!(next > x && next < y)) break;
+      const f = value(next) - level;
+      if (Math.abs(f) < level * 2 ** -50) return next;
+      if (f > 0 === fx > 0) [x, fx, fy] = [next, f, fy / 2];
+      else [y, fy, fx] = [next, f, fx / 2];
+    }
+    return x / 2 + y / 2;
+  };
+  const first = Math.max(Math.floor(Math.log2(Math.max(small, 2 ** (emin - 1)))), emin);
+  for (let k = first; 2 ** k <= large && k < first + 64; k += 1) {
+    const level = 2 ** k;
+    for (const target of [level * (1 - SLIVER), level * (1 + SLIVER)]) if (small < target && target < large) cuts.push(locate(target));
   }
-  return { absolute, relative };
+  return [...new Set(cuts)].filter((x) => lo < x && x < hi).sort((p, q) => p - q);
+}
+
+/** sup |computed - p|. */
+export const absoluteError = (pieces: readonly ErrorPiece[]): number => pieces.reduce((most, p) => Math.max(most, p.error), 0);
+
+export interface RelativeError {
+  /** sup |computed - p| / |p| where |f| is at least the smallest normal number; Infinity where no bound is known. */
+  readonly relative: number;
+  /** sup |computed - p| where |f| can be below it; null where it cannot. */
+  readonly subnormal: number | null;
+}
+
+/** With |p - f| <= r |f|: the smallest normal number as a limit for |f| is (1 - r) times that for |p|. */
+export function relativeError(pieces: readonly ErrorPiece[], r: number, { result }: Arithmetic): RelativeError {
+  const normal = 2 ** result.emin;
+  const least = interval.down(normal * Math.max(0, interval.down(1 - r)));
+  let relative = 0;
+  let subnormal: number | null = null;
+  for (const { value, error } of pieces) {
+    if (interval.leastSize(value) < interval.up(normal * interval.up(1 + r))) subnormal = Math.max(subnormal ?? 0, error);
+    if (interval.size(value) < least) continue;
+    const size = Math.max(interval.leastSize(value), least);
+    relative = Math.max(relative, error === 0 ? 0 : size > 0 ? interval.up(error / size) : Infinity);
+  }
+  return { relative, subnormal };
+}
+
+/** Consecutive pieces on which one ulp of f is at least 2^exponent. */
+export interface BinadeRun {
+  readonly low: number;
+  readonly high: number;
+  readonly exponent: number;
+  /** sup |computed - p| and sup |p| there. */
+  readonly error: number;
+  readonly size: number;
+}
+
+/** With |p - f| <= r |f|, r < 1: |f| >= |p| / (1 + r). */
+export function binadeRuns(pieces: readonly ErrorPiece[], r: number, { result }: Arithmetic): BinadeRun[] {
+  const runs: BinadeRun[] = [];
+  for (const { x, value, error } of pieces) {
+    const least = interval.down(interval.leastSize(value) / interval.up(1 + r));
+    const exponent = ulpExponent(Q.fromDouble(Math.max(0, least)), result);
+    const last = runs.at(-1);
+    if (last && last.exponent === exponent && last.high === x.lo) runs[runs.length - 1] = { ...last, high: x.hi, error: Math.max(last.error, error), size: Math.max(last.size, interval.size(value)) };
+    else runs.push({ low: x.lo, high: x.hi, exponent, error, size: interval.size(value) });
+  }
+  return runs;
 }

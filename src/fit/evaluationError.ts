@@ -1,132 +1,248 @@
 /**
- * What rounding does to one evaluation of an expression tree in a float format, for every argument in an interval.
+ * What rounding does to one evaluation of a program in a float format, for every argument in an interval.
  * Each operation rounds to nearest: computed = exact op (computed operands) + d, |d| at most half an ulp of the result's binade
  * (Higham, Accuracy and Stability of Numerical Algorithms, ch. 2 and 3, cited from memory). Bounds are carried as doubles rounded up.
  *
  * Contraction: a sum with a product in it may be computed with one rounding less. The bound of the uncontracted evaluation covers that,
  * since it only drops a rounding whose bound stays in the sum; the tests hold it against both.
  */
-import type { Expression } from '../expression/index.ts';
-import { Q } from '../expression/index.ts';
+import { type Expression, Q, type Rational } from '../expression/index.ts';
 import { Declined } from '../outcome.ts';
 import { type Interval, interval } from '../rigorous/index.ts';
-import { type FloatFormat, isRepresentable } from './format.ts';
+import { binaryExponent, type FloatFormat, isRepresentable, powerOfTwo } from './format.ts';
+import type { Arithmetic, Program } from './program.ts';
 
 export interface RoundedValue {
-  /** Encloses the exact value of the tree (exact operations on the exact argument). */
+  /** Encloses the exact value of the tree (exact operations on the exact argument) over the whole argument interval. */
   readonly exact: Interval;
   /** |computed - exact| at most this, where nothing overflows. */
   readonly absolute: number;
-  /** |computed - exact| <= relative * |exact| wherever |exact| >= relativeFrom; Infinity where no such bound is known. */
-  readonly relative: number;
-  /** 0 where underflow cannot spoil the relative bound. */
-  readonly relativeFrom: number;
+  /** The exact value at the two ends of the argument interval, and its slope in between: they make `exact` tight. */
+  readonly atLow: Interval;
+  readonly atHigh: Interval;
+  readonly slope: Interval;
 }
-
-/** What is known before the result is rounded. */
-type Unrounded = RoundedValue;
 
 const { up } = interval;
 const addUp = (a: number, b: number): number => (a === 0 ? b : b === 0 ? a : up(a + b));
 const mulUp = (a: number, b: number): number => (a === 0 || b === 0 ? 0 : up(a * b));
+const UNIT: Interval = { lo: 0, hi: 1 };
 
-/** Half an ulp at the largest magnitude that a result can have; 0 for a result that is always 0. */
-function halfUlp(magnitude: number, format: FloatFormat): number {
+/**
+ * The largest rounding error of a result of at most this size: half an ulp of the binade below it, or its distance beyond the start of its own binade
+ * (a float) where that is less; never more than the size itself (zero is a float).
+ */
+export function roundingError(magnitude: number, format: FloatFormat): number {
   if (magnitude === 0) return 0;
+  if (!(magnitude < Infinity)) return Infinity;
   let e = Math.max(Math.floor(Math.log2(magnitude)), format.emin);
   // The logarithm is only a guess: settle it by exact powers of two.
   while (2 ** (e + 1) <= magnitude) e += 1;
   while (e > format.emin && 2 ** e > magnitude) e -= 1;
   // Half of the smallest subnormal double is no double: round it up.
-  return Math.max(2 ** (e - format.precision), Number.MIN_VALUE);
+  const half = Math.max(2 ** (e - format.precision), Number.MIN_VALUE);
+  const start = 2 ** e;
+  const below = e > format.emin && magnitude >= start ? Math.max(half / 2, up(magnitude - start)) : half;
+  return Math.min(half, below, magnitude);
 }
 
-/** Rounding of a result: absolute part by binade (it covers underflow), relative part u for results of normal size. */
-function rounded({ exact, absolute, relative, relativeFrom }: Unrounded, format: FloatFormat): RoundedValue {
-  const magnitude = addUp(interval.size(exact), absolute);
+export const exactValue = (exact: Interval, atLow = exact, atHigh = exact, slope: Interval = interval.ZERO): RoundedValue => ({ exact, absolute: 0, atLow, atHigh, slope });
+/** The argument itself: any float of the interval. */
+export const argumentValue = (x: Interval): RoundedValue => ({ exact: x, absolute: 0, atLow: { lo: x.lo, hi: x.lo }, atHigh: { lo: x.hi, hi: x.hi }, slope: interval.ONE });
+
+type Exact = Pick<RoundedValue, 'exact' | 'atLow' | 'atHigh' | 'slope'>;
+
+const meet = (a: Interval, b: Interval): Interval => interval.intersect(a, b) ?? a;
+
+/** Sharpens the naive range by monotonicity or by the mean value form from both ends. */
+function sharpened(naive: Interval, atLow: Interval, atHigh: Interval, slope: Interval, width: number): Exact {
+  if (slope.lo >= 0 || slope.hi <= 0) return { exact: meet(naive, interval.union(atLow, atHigh)), atLow, atHigh, slope };
+  const way = interval.multiply(slope, { lo: UNIT.lo, hi: width });
+  return { exact: meet(meet(naive, interval.add(atLow, way)), interval.subtract(atHigh, way)), atLow, atHigh, slope };
+}
+
+/** Rounding of a result. */
+function rounded(exact: Exact, absolute: number, format: FloatFormat): RoundedValue {
+  const magnitude = addUp(interval.size(exact.exact), absolute);
   const limit = 2 ** format.emax * (2 - 2 ** (1 - format.precision));
-  if (!(magnitude <= limit)) throw new Declined('bad-request', `The evaluation can overflow ${format.name} on this interval; take a smaller interval.`);
-  const u = 2 ** -format.precision;
-  const total = addUp(absolute, halfUlp(magnitude, format));
-  const viaAbsolute = interval.leastSize(exact) > 0 ? up(total / interval.leastSize(exact)) : Infinity;
-  const viaRelative = relative < 0.5 ? addUp(addUp(relative, u), mulUp(relative, u)) : Infinity;
-  if (viaAbsolute <= viaRelative) return { exact, absolute: total, relative: viaAbsolute, relativeFrom: 0 };
-  // Twice the smallest normal number: the computed result is then normal too.
-  return { exact, absolute: total, relative: viaRelative, relativeFrom: Math.max(relativeFrom, 2 ** (format.emin + 1)) };
+  if (!(magnitude <= limit)) throw new Declined('bad-request', `The evaluation can overflow ${format.name} on this interval; take a smaller interval or a wider format.`);
+  return { ...exact, absolute: addUp(absolute, roundingError(magnitude, format)) };
 }
 
-function unroundedProduct(a: RoundedValue, b: RoundedValue, exact: Interval): Unrounded {
-  const absolute = addUp(addUp(mulUp(interval.size(a.exact), b.absolute), mulUp(interval.size(b.exact), a.absolute)), mulUp(a.absolute, b.absolute));
-  const relative = a.relative === Infinity || b.relative === Infinity ? Infinity : addUp(addUp(a.relative, b.relative), mulUp(a.relative, b.relative));
-  // |ab| >= r implies |a| >= r / max|b|.
-  return { exact, absolute, relative, relativeFrom: Math.max(mulUp(a.relativeFrom, interval.size(b.exact)), mulUp(b.relativeFrom, interval.size(a.exact))) };
+const productError = (a: RoundedValue, b: RoundedValue): number =>
+  addUp(addUp(mulUp(interval.size(a.exact), b.absolute), mulUp(interval.size(b.exact), a.absolute)), mulUp(a.absolute, b.absolute));
+
+/** The exponent of a constant that is a power of two (or its negative): multiplying by it only underflows. */
+function powerOfTwoFactor(e: Expression): number | null {
+  if (e.kind !== 'number' || Q.isZero(e.value)) return null;
+  const k = binaryExponent(e.value);
+  return Q.equal(Q.absolute(e.value), powerOfTwo(k)) ? k : null;
 }
 
-function unroundedSum(a: RoundedValue, b: RoundedValue): Unrounded {
-  const exact = interval.add(a.exact, b.exact);
-  const absolute = addUp(a.absolute, b.absolute);
-  // Same signs: the relative error of a sum is at most the larger of the two, where both bounds hold without condition.
-  const sameSign = (a.exact.lo >= 0 && b.exact.lo >= 0) || (a.exact.hi <= 0 && b.exact.hi <= 0);
-  const known = sameSign && a.relativeFrom === 0 && b.relativeFrom === 0;
-  return { exact, absolute, relative: known ? Math.max(a.relative, b.relative) : Infinity, relativeFrom: 0 };
+/** a - b is exact where both are floats and b/2 <= a <= 2b (Sterbenz, Floating-Point Computation, 1974, cited from memory). */
+function sterbenz(a: RoundedValue, b: RoundedValue): boolean {
+  if (a.absolute !== 0 || b.absolute !== 0) return false;
+  const apart = (x: Interval, y: Interval): boolean => x.lo > 0 && y.lo > 0 && y.hi <= 2 * x.lo && x.hi <= 2 * y.lo;
+  return apart(a.exact, interval.negate(b.exact)) || apart(interval.negate(a.exact), b.exact);
 }
 
-/** Multiplying by one or minus one rounds nothing. */
-const isExactFactor = (e: Expression): boolean => e.kind === 'number' && Q.isOne(Q.absolute(e.value));
+/** Evaluates a program's trees over one argument interval, step by step. */
+class Evaluator {
+  readonly #values: Map<string, RoundedValue>;
+  readonly #width: number;
+  readonly #format: FloatFormat;
 
-/**
- * Bounds for the value and the rounding error of the tree, the argument being any float of `argument`. Sums and products are taken from left to right, two at a time, as code does.
- * Allowed nodes: the symbol `variable` (an exact float), numbers of the format, sums, products, quotients, negations, integer powers written as products, fma calls, square roots.
- */
-export function evaluationError(tree: Expression, variable: string, argument: Interval, format: FloatFormat): RoundedValue {
-  const visit = (e: Expression): RoundedValue => {
+  constructor(values: Map<string, RoundedValue>, width: number, format: FloatFormat) {
+    this.#values = values;
+    this.#width = width;
+    this.#format = format;
+  }
+
+  define(name: string, value: RoundedValue): void {
+    this.#values.set(name, value);
+  }
+
+  visit(e: Expression): RoundedValue {
     switch (e.kind) {
-      case 'symbol':
-        if (e.name !== variable) throw new Declined('bad-request', `The symbol ${e.name} has no value here.`);
-        return { exact: argument, absolute: 0, relative: 0, relativeFrom: 0 };
+      case 'symbol': {
+        const value = this.#values.get(e.name);
+        if (!value) throw new Declined('bad-request', `The symbol ${e.name} has no value here.`);
+        return value;
+      }
       case 'number':
-        if (!isRepresentable(e.value, format)) throw new Declined('bad-request', 'A coefficient is not a number of the format.');
-        return { exact: interval.fromRational(e.value), absolute: 0, relative: 0, relativeFrom: 0 };
+        if (!isRepresentable(e.value, this.#format)) throw new Declined('bad-request', 'A coefficient is not a number of the format.');
+        return exactValue(interval.fromRational(e.value));
       case 'negation': {
-        const inner = visit(e.operand);
-        return { ...inner, exact: interval.negate(inner.exact) };
+        const inner = this.visit(e.operand);
+        return { absolute: inner.absolute, exact: interval.negate(inner.exact), atLow: interval.negate(inner.atLow), atHigh: interval.negate(inner.atHigh), slope: interval.negate(inner.slope) };
       }
       case 'sum':
-        return e.terms.map(visit).reduce((a, b) => rounded(unroundedSum(a, b), format));
-      case 'product': {
-        const [first, ...rest] = e.factors;
-        if (!first) throw new Declined('bad-request', 'An empty product has no evaluation.');
-        let left = { value: visit(first), node: first };
-        for (const node of rest) {
-          const value = visit(node);
-          const same = left.node.kind === 'symbol' && node.kind === 'symbol' && left.node.name === node.name;
-          const exact = same ? interval.square(left.value.exact) : interval.multiply(left.value.exact, value.exact);
-          const whole = unroundedProduct(left.value, value, exact);
-          left = { value: isExactFactor(node) || isExactFactor(left.node) ? whole : rounded(whole, format), node: e };
-        }
-        return left.value;
-      }
-      case 'quotient': {
-        const [a, b] = [visit(e.numerator), visit(e.denominator)];
-        const exact = interval.divide(a.exact, b.exact);
-        const least = interval.leastSize(b.exact) - b.absolute;
-        if (!exact || !(least > 0)) throw new Declined('bad-request', 'A divisor can be zero on this interval.');
-        const absolute = up(addUp(a.absolute, mulUp(interval.size(exact), b.absolute)) / interval.down(least));
-        const unconditional = a.relativeFrom === 0 && b.relativeFrom === 0 && b.relative < 1 && a.relative !== Infinity;
-        const relative = unconditional ? up(addUp(a.relative, b.relative) / interval.down(1 - b.relative)) : Infinity;
-        return rounded({ exact, absolute, relative, relativeFrom: 0 }, format);
-      }
+        return e.terms.map((t) => this.visit(t)).reduce((a, b) => (sterbenz(a, b) ? { ...this.#sum(a, b), absolute: 0 } : rounded(this.#sum(a, b), addUp(a.absolute, b.absolute), this.#format)));
+      case 'product':
+        return this.#product(e.factors);
+      case 'quotient':
+        return this.#quotient(this.visit(e.numerator), this.visit(e.denominator));
       case 'call': {
-        const [x, y, z] = e.args.map(visit);
-        if (e.function === 'fma' && x && y && z) {
-          const inner = unroundedProduct(x, y, interval.multiply(x.exact, y.exact));
-          return rounded(unroundedSum(inner, z), format);
-        }
-        throw new Declined('bad-request', `The call of ${e.function} is not part of a polynomial.`);
+        const [x, y, z] = e.args.map((a) => this.visit(a));
+        if (e.function !== 'fma' || !x || !y || !z) throw new Declined('bad-request', `The call of ${e.function} is not part of a polynomial.`);
+        const inner: RoundedValue = { ...this.#times(x, y), absolute: productError(x, y) };
+        return rounded(this.#sum(inner, z), addUp(inner.absolute, z.absolute), this.#format);
       }
       default:
         throw new Declined('bad-request', 'Only sums, products and quotients of floats can be bounded.');
     }
+  }
+
+  #sum(a: Exact, b: Exact): Exact {
+    const { add } = interval;
+    return sharpened(add(a.exact, b.exact), add(a.atLow, b.atLow), add(a.atHigh, b.atHigh), add(a.slope, b.slope), this.#width);
+  }
+
+  #times(a: Exact, b: Exact): Exact {
+    const { add, multiply } = interval;
+    const naive = a === b ? interval.square(a.exact) : multiply(a.exact, b.exact);
+    return sharpened(naive, multiply(a.atLow, b.atLow), multiply(a.atHigh, b.atHigh), add(multiply(a.slope, b.exact), multiply(a.exact, b.slope)), this.#width);
+  }
+
+  #product(factors: readonly Expression[]): RoundedValue {
+    const [first, ...rest] = factors;
+    if (!first) throw new Declined('bad-request', 'An empty product has no evaluation.');
+    let left = this.visit(first);
+    let leftPower = powerOfTwoFactor(first);
+    for (const node of rest) {
+      const value = this.visit(node);
+      const whole = this.#times(left, value);
+      const error = productError(left, value);
+      const k = leftPower ?? powerOfTwoFactor(node);
+      leftPower = null;
+      // By a power of two of at least one nothing is lost; by a smaller one only digits below the smallest subnormal.
+      if (k === null || (k < 0 && interval.leastSize(whole.exact) < 2 ** this.#format.emin)) left = rounded(whole, error, this.#format);
+      else left = { ...rounded(whole, error, this.#format), absolute: error };
+    }
+    return left;
+  }
+
+  #quotient(a: RoundedValue, b: RoundedValue): RoundedValue {
+    const { divide, multiply, subtract, square } = interval;
+    const [exact, atLow, atHigh] = [divide(a.exact, b.exact), divide(a.atLow, b.atLow), divide(a.atHigh, b.atHigh)];
+    const slope = divide(subtract(multiply(a.slope, b.exact), multiply(a.exact, b.slope)), square(b.exact));
+    const least = interval.down(interval.leastSize(b.exact) - b.absolute);
+    if (!exact || !atLow || !atHigh || !slope || !(least > 0)) throw new Declined('bad-request', 'A divisor can be zero on this interval; take a smaller interval.');
+    const range = sharpened(exact, atLow, atHigh, slope, this.#width);
+    const absolute = up(addUp(a.absolute, mulUp(interval.size(range.exact), b.absolute)) / least);
+    return rounded(range, absolute, this.#format);
+  }
+}
+
+/**
+ * Bounds for the value and the rounding error of the program, the argument being any float of `argument`. Sums and products are taken from left to right, two at a time, as code does.
+ * Allowed nodes: the variable (an exact float), steps, numbers of the format, sums, products, quotients, negations, fma calls.
+ */
+export function evaluationError(program: Program, variable: string, argument: Interval, { operations, result }: Arithmetic): RoundedValue {
+  const evaluator = new Evaluator(new Map([[variable, argumentValue(argument)]]), interval.width(argument), operations);
+  for (const step of program.steps) evaluator.define(step.name, evaluator.visit(step.value));
+  const value = evaluator.visit(program.result);
+  return operations.name === result.name ? value : rounded(value, value.absolute, result);
+}
+
+/** The exact value of a program of sums and products at a rational. */
+export function exactProgramValue({ steps, result }: Program, variable: string, x: Rational): Rational {
+  const values = new Map([[variable, x]]);
+  const visit = (e: Expression): Rational => {
+    switch (e.kind) {
+      case 'symbol': {
+        const value = values.get(e.name);
+        if (!value) throw new RangeError(`no value for ${e.name}`);
+        return value;
+      }
+      case 'number':
+        return e.value;
+      case 'negation':
+        return Q.negate(visit(e.operand));
+      case 'sum':
+        return e.terms.map(visit).reduce(Q.add);
+      case 'product':
+        return e.factors.map(visit).reduce(Q.multiply);
+      case 'quotient':
+        return Q.divide(visit(e.numerator), visit(e.denominator));
+      case 'call': {
+        const [a, b, c] = e.args.map(visit);
+        if (e.function === 'fma' && a && b && c) return Q.add(Q.multiply(a, b), c);
+        throw new RangeError(`no exact value of ${e.function}`);
+      }
+      default:
+        throw new RangeError(`no exact value of a ${e.kind}`);
+    }
   };
-  return visit(tree);
+  for (const step of steps) values.set(step.name, visit(step.value));
+  return visit(result);
+}
+
+/** The value in plain double arithmetic: for choosing places, never for a bound. */
+export function approximateValue({ steps, result }: Program, variable: string, x: number): number {
+  const values = new Map([[variable, x]]);
+  const visit = (e: Expression): number => {
+    switch (e.kind) {
+      case 'symbol':
+        return values.get(e.name) ?? NaN;
+      case 'number':
+        return Q.toDouble(e.value);
+      case 'negation':
+        return -visit(e.operand);
+      case 'sum':
+        return e.terms.reduce((sum, t) => sum + visit(t), 0);
+      case 'product':
+        return e.factors.reduce((product, f) => product * visit(f), 1);
+      case 'quotient':
+        return visit(e.numerator) / visit(e.denominator);
+      case 'call': {
+        const [a = NaN, b = NaN, c = NaN] = e.args.map(visit);
+        return a * b + c;
+      }
+      default:
+        return NaN;
+    }
+  };
+  for (const step of steps) values.set(step.name, visit(step.value));
+  return visit(result);
 }

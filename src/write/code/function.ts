@@ -6,10 +6,11 @@ import { codeLanguage, type CodeLanguage } from './languages.ts';
 import type { Code, CodeOptions } from './options.ts';
 
 export type Statement =
-  | { readonly kind: 'let'; readonly name: string; readonly value: Expression }
+  /** With `rounded`, the value is converted to the float type where the language has no declarations of it (`np.float32(...)`, `Math.fround(...)`). */
+  | { readonly kind: 'let'; readonly name: string; readonly value: Expression; readonly rounded?: boolean }
   /** A condition (a relation, or a conjunction in order) under which the inner statements run; they end with a `return`. */
   | { readonly kind: 'if'; readonly condition: Expression; readonly then: readonly Statement[] }
-  | { readonly kind: 'return'; readonly value: Expression };
+  | { readonly kind: 'return'; readonly value: Expression; readonly rounded?: boolean };
 
 export interface FunctionText {
   readonly name: string;
@@ -93,11 +94,17 @@ export function functionCode(text: FunctionText, options: CodeOptions): Outcome<
   });
 }
 
+function converted({ value, rounded }: { readonly value: Expression; readonly rounded?: boolean }, writer: CodeWriter): string {
+  const { text } = writer.write(value);
+  const wrap = rounded ? writer.row.floats[writer.format]?.wrap : undefined;
+  return wrap ? `${wrap[0]}${text}${wrap[1]}` : text;
+}
+
 function writeStatements(body: readonly Statement[], writer: CodeWriter, shape: Shape, type: string, indent: string, lines: string[], name: string): void {
   if (body.length === 0) throw new Declined('bad-request', 'A function needs at least one statement.');
   for (const statement of body) {
-    if (statement.kind === 'let') lines.push(indent + shape.assign(statement.name, type, writer.write(statement.value).text));
-    else if (statement.kind === 'return') lines.push(...shape.result(writer.write(statement.value).text, name).map((line) => indent + line));
+    if (statement.kind === 'let') lines.push(indent + shape.assign(statement.name, type, converted(statement, writer)));
+    else if (statement.kind === 'return') lines.push(...shape.result(converted(statement, writer), name).map((line) => indent + line));
     else {
       lines.push(indent + shape.open(writer.write(statement.condition).text));
       writeStatements(statement.then, writer, shape, type, indent + shape.indent, lines, name);

@@ -7,7 +7,8 @@ import { codeLanguage, type FloatType, type LanguageRow } from './languages.ts';
 export interface LiteralStyle {
   /** Suffix or kind as the file writes it (`_dp`, `f`, `_f64`, empty); default that of the language. */
   readonly suffix?: string;
-  readonly hexadecimal?: boolean;
+  /** Hexadecimal digits where the language has them: always, or only for floats that are not a short decimal themselves. */
+  readonly hexadecimal?: boolean | 'where inexact';
 }
 
 /**
@@ -19,10 +20,14 @@ export function literal(value: Rational, format: FloatFormat, language: Language
   const rounded = roundToFormat(value, format);
   if (!type || !rounded) return null;
   const negative = rounded.num < 0n;
-  const text = style.hexadecimal && type.hexadecimal ? `${hexFloat(Q.absolute(rounded), format)}${style.suffix ?? (type.suffix === 'f' ? 'f' : '')}` : decimal(Q.absolute(rounded), format, type, style);
+  const wanted = style.hexadecimal === 'where inexact' ? !isShortDecimal(rounded) : style.hexadecimal === true;
+  const text = wanted && type.hexadecimal ? `${hexFloat(Q.absolute(rounded), format)}${style.suffix ?? (type.suffix === 'f' ? 'f' : '')}` : decimal(Q.absolute(rounded), format, type, style);
   const whole = type.wrap && style.suffix === undefined ? `${type.wrap[0]}${negative ? '-' : ''}${text}${type.wrap[1]}` : `${negative ? '-' : ''}${text}`;
   return whole;
 }
+
+/** A multiple of 2^-6 below 2^20: at most a dozen digits, all of them exact. */
+const isShortDecimal = (value: Rational): boolean => 64n % value.den === 0n && value.num < 1n << 20n && value.num > -(1n << 20n);
 
 function decimal(magnitude: Rational, format: FloatFormat, type: FloatType, style: LiteralStyle): string {
   const shortest = shortestDecimal(magnitude, format);

@@ -1,0 +1,90 @@
+/** A program as code: a function (or one expression) with a comment that states what was proved and under which assumptions. */
+import { build, type Expression, mapChildren } from '../expression/index.ts';
+import { Declined } from '../outcome.ts';
+import { type CodeOptions, codeLanguage, commentLines, functionCode, type LanguageRow, type Statement, toCode } from '../write/index.ts';
+import type { FloatFormat } from './format.ts';
+import { formatByName } from './format.ts';
+import type { Arithmetic, Program } from './program.ts';
+import { wrapCode } from './wrap.ts';
+
+export interface FitCodeText {
+  /** Imports, comment and function. */
+  readonly code: string;
+  /** Comment and function without the imports. */
+  readonly body: string;
+  readonly imports: readonly string[];
+}
+
+export interface FitCodeRequest {
+  readonly program: Program;
+  readonly variable: string;
+  readonly language: string;
+  readonly format: FloatFormat;
+  readonly name: string;
+  readonly comment: readonly string[];
+  /** One expression in the variable instead of a function. */
+  readonly expression: boolean;
+}
+
+/** The language row for an emit name. Throws Declined for one that code is not written in. */
+export function rowFor(language: string): LanguageRow {
+  const row = codeLanguage(language);
+  if (!row) throw new Declined('bad-request', `Code is not written in the language "${language}"; choose c, cpp, rust, python, javascript, typescript, java, csharp, go, julia, fortran, matlab, r, glsl, hlsl, kotlin or swift.`);
+  return row;
+}
+
+const computesInDoubles = (row: LanguageRow): boolean => row.family === 'javascript';
+
+/** In which formats code in this language computes for a result of the format. */
+export function machineArithmetic(language: string, format: FloatFormat): Arithmetic {
+  const row = rowFor(language);
+  if (computesInDoubles(row) && format.name === 'binary32') {
+    const operations = formatByName('binary64');
+    if (operations?.kind === 'float') return { operations, result: format };
+  }
+  return { operations: format, result: format };
+}
+
+export type Fusing = 'exactly' | 'perhaps' | 'never';
+/** Whether the language's fused multiply-add rounds once for certain. A shader may compute it in two steps; Go's goes through binary64 for binary32. */
+export function fusing(language: string, format: FloatFormat): Fusing {
+  const row = rowFor(language);
+  if (!row.fma) return 'never';
+  return row.id === 'glsl' || (row.id === 'hlsl' && format.name !== 'binary64') || (row.id === 'go' && format.name !== 'binary64') ? 'perhaps' : 'exactly';
+}
+
+/** Name of a function in the habits of the language. */
+export function functionName(words: readonly string[], language: string): string {
+  const camel = ['javascript', 'java', 'csharp', 'go', 'kotlin', 'swift', 'glsl', 'hlsl'].includes(rowFor(language).family);
+  const [first = 'f', ...rest] = words.map((w) => w.replace(/[^A-Za-z0-9]/g, ''));
+  return camel ? first + rest.map((w) => w.charAt(0).toUpperCase() + w.slice(1)).join('') : [first, ...rest].join('_').toLowerCase();
+}
+
+function inlined({ steps, result }: Program): Expression {
+  const values = new Map<string, Expression>();
+  const visit = (e: Expression): Expression => (e.kind === 'symbol' ? (values.get(e.name) ?? e) : mapChildren(e, visit));
+  for (const step of steps) values.set(step.name, visit(step.value));
+  return visit(result);
+}
+
+/** Throws Declined where the language cannot say it (no such float type, for one). */
+export function fitCode({ program, variable, language, format, name, comment, expression }: FitCodeRequest): FitCodeText {
+  const row = rowFor(language);
+  const options: CodeOptions = { language, format: format.name, literal: { hexadecimal: 'where inexact' } };
+  if (expression) {
+    const written = toCode(inlined(program), options);
+    if (!written.ok) throw new Declined(written.error.code, written.error.message);
+    const wrap = computesInDoubles(row) ? row.floats[format.name]?.wrap : undefined;
+    const body = wrap ? `${wrap[0]}${written.value.text}${wrap[1]}` : written.value.text;
+    return { code: body, body, imports: written.value.imports };
+  }
+  // Without declared types the argument decides in which format the operations round.
+  const untyped = row.floats[format.name]?.wrap !== undefined && row.floats[format.name]?.name === '';
+  const converted: Statement[] = untyped ? [{ kind: 'let', name: variable, value: build.symbol(variable), rounded: true }] : [];
+  const body: Statement[] = [...converted, ...program.steps.map((s): Statement => ({ kind: 'let', ...s })), { kind: 'return', value: program.result, rounded: computesInDoubles(row) }];
+  const written = functionCode({ name, parameters: [variable], body }, options);
+  if (!written.ok) throw new Declined(written.error.code, written.error.message);
+  const text = [...commentLines(row.id, comment), ...written.value.text.split('\n').flatMap((line) => wrapCode(line, row))].join('\n');
+  const { imports } = written.value;
+  return { code: `${imports.length > 0 ? `${imports.join('\n')}\n\n` : ''}${text}\n`, body: `${text}\n`, imports };
+}

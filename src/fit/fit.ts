@@ -1,0 +1,144 @@
+/** A fit as asked for: the polynomial, the program in the target language, what was proved, what was assumed. */
+import type { Rational } from '../expression/index.ts';
+import { attempt, type Budget, Declined, type Outcome } from '../outcome.ts';
+import { real } from '../rigorous/index.ts';
+import { codeLanguage, type PolynomialTerm, toPlain } from '../write/index.ts';
+import { type FitCodeText, fitCode, functionName, fusing, machineArithmetic, rowFor } from './code.ts';
+import type { FloatFormat, NumberFormat } from './format.ts';
+import { fitPolynomial, type PolynomialProblem } from './polynomialFit.ts';
+import type { Program } from './program.ts';
+import type { FitMeasure, ProvedError } from './proof.ts';
+import type { Basis } from './search.ts';
+import type { Expression } from '../expression/index.ts';
+
+export interface FitProblem {
+  readonly function: Expression;
+  readonly variable: string;
+  /** Rational ends; irrational ones are rounded outward by the caller. */
+  readonly low: Rational;
+  readonly high: Rational;
+  readonly measure: FitMeasure;
+  /** Exactly one of the two; a tolerance is in the measure. */
+  readonly tolerance?: Rational;
+  readonly degree?: number;
+  readonly format: NumberFormat;
+  /** Target language of the code. */
+  readonly language: string;
+  readonly form: 'horner' | 'estrin';
+  readonly contraction: 'any' | 'none' | 'fma';
+  readonly method: 'minimax' | 'taylor' | 'economized' | 'rational';
+  readonly pieces: number | 'auto';
+  readonly basis?: Basis;
+  /** How the interval is written in the comment. */
+  readonly intervalText: readonly [string, string];
+  readonly result?: 'function' | 'expression';
+}
+
+export interface Fit {
+  readonly terms: readonly PolynomialTerm[];
+  readonly format: NumberFormat;
+  readonly degree: number;
+  /** The polynomial is in x - centre. */
+  readonly centre: Rational;
+  readonly program: Program;
+  readonly error: ProvedError;
+  /** How it was proved, in words. */
+  readonly method: string;
+  readonly code: FitCodeText;
+  readonly assumptions: readonly string[];
+}
+
+/** Fails with bad-request (what cannot be fitted and why), undecided (nothing could be proved), over-budget. */
+export const fit = (problem: FitProblem, budget: Budget): Outcome<Fit> => attempt(() => fitted(problem, budget));
+
+function fitted(problem: FitProblem, budget: Budget): Fit {
+  const { format, language, contraction, method } = problem;
+  const row = rowFor(language);
+  if (format.kind === 'fixed') throw new Declined('bad-request', 'Fixed-point formats are not fitted in this version; choose binary32 or binary64.');
+  if (method === 'rational') throw new Declined('bad-request', 'Rational forms are not fitted in this version; choose the method minimax.');
+  if (problem.pieces !== 1) throw new Declined('bad-request', 'The interval is not split in this version; ask for one piece.');
+  if (!row.floats[format.name]) throw new Declined('bad-request', `${row.title} has no ${format.name} type; choose another format or language.`);
+  const fused = contraction === 'fma' ? fusing(language, format) : 'never';
+  if (contraction === 'fma' && fused === 'never') throw new Declined('bad-request', `${row.title} has no fused multiply-add; ask for the contraction any or none.`);
+  const polynomial: PolynomialProblem = { ...problem, format, ...withOperations(language, format), fma: fused === 'exactly', writtenFma: contraction === 'fma', method };
+  const found = fitPolynomial(polynomial, budget);
+  const assumptions = assumptionsOf(problem, format);
+  const variable = /^[A-Za-z][A-Za-z0-9]*$/.test(problem.variable) && !row.reserved.includes(problem.variable) ? problem.variable : 'x';
+  const program = variable === problem.variable ? found.writtenProgram : renamed(found.writtenProgram, problem.variable, variable);
+  const comment = commentOf(problem, format, found.error, assumptions);
+  const code = fitCode({ program, variable, language, format, name: functionName(wordsFor(problem.function), language), comment, expression: problem.result === 'expression' });
+  return { terms: found.terms, format, degree: found.degree, centre: found.centre, program: found.writtenProgram, error: found.error, method: methodText(problem), code, assumptions };
+}
+
+const withOperations = (language: string, format: FloatFormat): { readonly operations?: FloatFormat } => {
+  const { operations } = machineArithmetic(language, format);
+  return operations.name === format.name ? {} : { operations };
+};
+
+function renamed({ steps, result }: Program, from: string, to: string): Program {
+  const rename = (e: Expression): Expression => (e.kind === 'symbol' && e.name === from ? { kind: 'symbol', name: to } : mapNode(e, rename));
+  return { steps: steps.map((s) => ({ ...s, value: rename(s.value) })), result: rename(result) };
+}
+
+function mapNode(e: Expression, f: (e: Expression) => Expression): Expression {
+  switch (e.kind) {
+    case 'sum':
+      return { ...e, terms: e.terms.map(f) };
+    case 'product':
+      return { ...e, factors: e.factors.map(f) };
+    case 'quotient':
+      return { ...e, numerator: f(e.numerator), denominator: f(e.denominator) };
+    case 'negation':
+      return { ...e, operand: f(e.operand) };
+    case 'call':
+      return { ...e, args: e.args.map(f) };
+    default:
+      return e;
+  }
+}
+
+/** `sin approximation` for a call of one function, else only `approximation`. */
+const wordsFor = (f: Expression): readonly string[] => [...(f.kind === 'call' && /^[a-z]\w*$/i.test(f.function) ? [f.function] : []), 'approximation'];
+
+const METHODS = { minimax: 'best polynomial, coefficients rounded together', taylor: 'truncated expansion', economized: 'economized expansion', rational: 'best rational function' } as const;
+const methodText = ({ method }: FitProblem): string => `${METHODS[method]}; local models with proven remainders; rounding bounded operation by operation`;
+
+function assumptionsOf({ language, contraction }: FitProblem, { name }: FloatFormat): string[] {
+  const { operations } = machineArithmetic(language, { name } as FloatFormat);
+  const row = codeLanguage(language);
+  const list = ['round to nearest, subnormal numbers kept', 'no optimisation that changes values (such as fast-math)'];
+  list.push(operations.name === name ? `each operation rounded to ${name}` : `operations in ${operations.name}, one rounding to ${name} at the end`);
+  if (contraction === 'fma') list.push('holds whether or not further products are fused with sums');
+  else list.push('holds with and without fusing of products and sums (a*b + c)');
+  if (row?.id === 'glsl' || row?.id === 'hlsl') list.push('the device rounds additions and multiplications correctly');
+  return list;
+}
+
+const MEASURES: Readonly<Record<FitMeasure, string>> = { absolute: 'absolute error', relative: 'relative error', ulp: 'error in ulp' };
+const WIDTH = 92;
+
+function commentOf(problem: FitProblem, format: FloatFormat, error: ProvedError, assumptions: readonly string[]): string[] {
+  const [low, high] = problem.intervalText;
+  const total = real.rationalToDecimal(error.total, 4, 1);
+  const subnormal = error.subnormal ? ` (where the function is below the smallest normal number: absolute error at most ${real.rationalToDecimal(error.subnormal, 4, 1)})` : '';
+  const unit = problem.measure === 'ulp' ? ' ulp' : '';
+  return [
+    `${toPlain(problem.function)} for ${problem.variable.replace(/\\/g, '')} in [${low}, ${high}], ${format.name}.`,
+    `Proven for every ${format.name} argument in the interval, evaluation included: ${MEASURES[problem.measure].replace(' in ulp', '')} at most ${total}${unit}${subnormal}.`,
+    `Assumes: ${assumptions.join('; ')}.`,
+    'Valid only on this interval and in this format. In safety-related code follow your own standards and have it reviewed by qualified people.',
+  ].flatMap(filled);
+}
+
+/** Words of one sentence in lines of bounded width. */
+function filled(text: string): string[] {
+  const lines: string[] = [];
+  let line = '';
+  for (const word of text.split(' ')) {
+    if (line !== '' && line.length + 1 + word.length > WIDTH) {
+      lines.push(line);
+      line = word;
+    } else line = line === '' ? word : `${line} ${word}`;
+  }
+  return [...lines, line];
+}

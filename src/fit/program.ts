@@ -1,0 +1,81 @@
+/** What a machine computes for one argument: named steps in order, then the result. The proof and the emitted code are both made from it. */
+import { build, type Expression, Q, type Rational } from '../expression/index.ts';
+import { polynomialForm, type PolynomialForm, type PolynomialTerm, type Step } from '../write/index.ts';
+import type { FloatFormat } from './format.ts';
+
+export type Program = PolynomialForm;
+export type { Step };
+
+/** In which format operations round, and in which the result is handed over (JavaScript computes in binary64 and rounds once to binary32). */
+export interface Arithmetic {
+  readonly operations: FloatFormat;
+  readonly result: FloatFormat;
+}
+
+export interface PolynomialProgramShape {
+  readonly form: 'horner' | 'estrin';
+  readonly fma: boolean;
+  /** c1 u + (rest): the leading term is added last, so that only its own rounding is left where the rest is small. */
+  readonly leadingApart: boolean;
+}
+
+/** Names for steps that are not the variable's. */
+const stepName = (wanted: string, variable: string): string => (variable.startsWith(wanted) ? `${wanted}${wanted}` : wanted);
+
+/** The polynomial in u = x - centre. */
+export function polynomialProgram(terms: readonly PolynomialTerm[], variable: string, centre: Rational, shape: PolynomialProgramShape): Program {
+  const x = build.symbol(variable);
+  const shifted = !Q.isZero(centre);
+  const offset = stepName('t', variable);
+  const argument = shifted ? build.symbol(offset) : x;
+  const first: Step[] = shifted ? [{ name: offset, value: build.sum(x, build.number(Q.negate(centre))) }] : [];
+  const prefix = stepName('u', variable);
+  const kept = terms.filter((t) => !Q.isZero(t.value));
+  const [lead, ...rest] = kept;
+  if (shape.leadingApart && lead && lead.power === 1 && rest.length > 0) {
+    const form = polynomialForm(rest, argument, shape, prefix);
+    const head = Q.isOne(lead.value) ? argument : build.product(build.number(lead.value), argument);
+    return { steps: [...first, ...form.steps], result: sumWith(head, form.result, shape.fma) };
+  }
+  const form = polynomialForm(kept, argument, shape, prefix);
+  return { steps: [...first, ...form.steps], result: form.result };
+}
+
+/** head + product, fused where the last factor of the product allows it. */
+function sumWith(head: Expression, product: Expression, fma: boolean): Expression {
+  if (!fma || product.kind !== 'product' || product.factors.length < 2) return build.sum(head, product);
+  const factors = [...product.factors];
+  const last = factors.pop();
+  return last ? build.call('fma', build.product(...factors), last, head) : build.sum(head, product);
+}
+
+export interface Operations {
+  readonly multiplications: number;
+  readonly additions: number;
+  readonly fused: number;
+}
+
+/** Operations of one evaluation, each step counted once. */
+export function countOperations({ steps, result }: Program): Operations {
+  let [multiplications, additions, fused] = [0, 0, 0];
+  const visit = (e: Expression): void => {
+    if (e.kind === 'sum') {
+      additions += e.terms.length - 1;
+      e.terms.forEach(visit);
+    } else if (e.kind === 'product') {
+      multiplications += e.factors.length - 1;
+      e.factors.forEach(visit);
+    } else if (e.kind === 'quotient') {
+      multiplications += 1;
+      visit(e.numerator);
+      visit(e.denominator);
+    } else if (e.kind === 'negation') visit(e.operand);
+    else if (e.kind === 'call') {
+      if (e.function === 'fma') fused += 1;
+      e.args.forEach(visit);
+    }
+  };
+  for (const step of steps) visit(step.value);
+  visit(result);
+  return { multiplications, additions, fused };
+}

@@ -1,0 +1,145 @@
+/** The whole error of a polynomial as a machine evaluates it: against the function (certified supremum) and by rounding, in the measure of the fit. */
+import { boundDifference, type DifferenceBound, polynomialOf } from '../bound/index.ts';
+import { type Expression, Q, type Rational } from '../expression/index.ts';
+import { type Budget, Declined } from '../outcome.ts';
+import type { PolynomialTerm } from '../write/index.ts';
+import { absoluteError, type BinadeRun, binadeRuns, errorPieces, relativeError } from './evaluationBound.ts';
+import { powerOfTwo, smallestNormal, unitRoundoff } from './format.ts';
+import type { Arithmetic, Program } from './program.ts';
+
+export type FitMeasure = 'absolute' | 'relative' | 'ulp';
+
+/** What is approximated, where and in which measure. */
+export interface ProofProblem {
+  readonly function: Expression;
+  readonly variable: string;
+  readonly low: Rational;
+  readonly high: Rational;
+  readonly measure: FitMeasure;
+  readonly arithmetic: Arithmetic;
+  /** The zero that function and polynomial share, or the centre of the polynomial. */
+  readonly centre: Rational;
+  /** The function has its zero (or a removable singularity) at the centre: bounds start there. */
+  readonly through: boolean;
+  /** Function and polynomial are both even or both odd on a symmetric interval: one half says all. */
+  readonly symmetric: boolean;
+}
+
+/** Errors in the measure, as rationals that bound from above. */
+export interface ProvedError {
+  /** Of the polynomial before its coefficients were rounded. */
+  readonly approximation: Rational;
+  /** What rounding the coefficients added to it (never negative). */
+  readonly rounding: Rational;
+  readonly evaluation: Rational;
+  readonly total: Rational;
+  /** A proven lower bound of the error of the rounded polynomial, evaluated exactly. */
+  readonly lower: Rational;
+  /** Absolute error where |f| is below the smallest normal number; null where it never is. */
+  readonly subnormal: Rational | null;
+}
+
+const greater = (a: Rational, b: Rational): Rational => (Q.compare(a, b) >= 0 ? a : b);
+const nonNegative = (q: Rational): Rational => greater(q, Q.ZERO);
+/** Doubles that are bounds, rounded up already. */
+const fromBound = (x: number): Rational => Q.fromDouble(x);
+
+/** sup |f - p| or |f - p|/|f|, as the measure needs it: ulp bounds start from the relative one. */
+export function certify(terms: readonly PolynomialTerm[], problem: ProofProblem, budget: Budget, settled = 1.001, part?: { readonly low: Rational; readonly high: Rational }): DifferenceBound {
+  const { low, high } = part ?? { low: problem.symmetric ? Q.ZERO : problem.low, high: problem.high };
+  const inside = Q.compare(low, problem.centre) <= 0 && Q.compare(problem.centre, high) <= 0;
+  const result = boundDifference({
+    function: problem.function,
+    approximation: polynomialOf(terms, problem.variable, problem.centre),
+    variable: problem.variable,
+    low,
+    high,
+    measure: part || problem.measure === 'absolute' ? 'absolute' : 'relative',
+    ...(problem.through && inside ? { through: problem.centre } : {}),
+    settled,
+    budget,
+  });
+  if (!result.ok) throw new Declined(result.error.code, result.error.message);
+  return result.value;
+}
+
+/** What is known of a polynomial in one measure, whatever program evaluates it. */
+export interface CertifiedPolynomial {
+  readonly terms: readonly PolynomialTerm[];
+  readonly whole: DifferenceBound;
+  /** Certified absolute suprema on parts, by their ends. */
+  readonly parts: Map<string, Rational>;
+}
+
+export const certified = (terms: readonly PolynomialTerm[], problem: ProofProblem, budget: Budget): CertifiedPolynomial => ({ terms, whole: certify(terms, problem, budget), parts: new Map() });
+
+/** Certified parts of an interval that one bound in ulp may rest on. */
+const MOST_PARTS = 12;
+
+/** sup over the runs of (|p - f| + spent error) / ulp: the worst run is certified by itself until the worst one is certified. */
+function inUlp(polynomial: CertifiedPolynomial, runs: readonly BinadeRun[], problem: ProofProblem, withEvaluation: boolean, budget: Budget): Rational {
+  // |p - f| <= r |f| and |f| <= |p| / (1 - r).
+  const coarse = Q.divide(polynomial.whole.upper, Q.subtract(Q.ONE, polynomial.whole.upper));
+  const entries = runs.map((run) => {
+    const spent = withEvaluation ? Q.multiply(fromBound(run.error), powerOfTwo(-run.exponent)) : Q.ZERO;
+    return { run, spent, total: Q.add(Q.multiply(Q.multiply(coarse, fromBound(run.size)), powerOfTwo(-run.exponent)), spent), done: false };
+  });
+  for (let parts = 0; parts < MOST_PARTS; parts += 1) {
+    const worst = entries.reduce<(typeof entries)[number] | null>((a, b) => (a && Q.compare(a.total, b.total) >= 0 ? a : b), null);
+    if (!worst || worst.done) return worst?.total ?? Q.ZERO;
+    const [low, high] = [Q.fromDouble(worst.run.low), Q.fromDouble(worst.run.high)];
+    const key = `${worst.run.low}:${worst.run.high}`;
+    const known = polynomial.parts.get(key) ?? certify(polynomial.terms, problem, budget, 1.01, { low: greater(low, problem.low), high: Q.compare(high, problem.high) > 0 ? problem.high : high }).upper;
+    polynomial.parts.set(key, known);
+    worst.total = Q.add(Q.multiply(known, powerOfTwo(-worst.run.exponent)), worst.spent);
+    worst.done = true;
+  }
+  return entries.reduce((most, e) => greater(most, e.total), Q.ZERO);
+}
+
+export interface EvaluationProof {
+  readonly total: Rational;
+  readonly evaluation: Rational;
+  readonly subnormal: Rational | null;
+  readonly runs: readonly BinadeRun[];
+}
+
+/** The total error of one program that evaluates the polynomial. Throws Declined where it can overflow or where no relative bound is known. */
+export function proveProgram(program: Program, polynomial: CertifiedPolynomial, problem: ProofProblem, budget: Budget): EvaluationProof {
+  const { measure, arithmetic } = problem;
+  const pieces = errorPieces(program, problem.variable, arithmetic, { low: problem.low, high: problem.high, centre: problem.centre, binades: measure === 'ulp' }, budget);
+  const upper = polynomial.whole.upper;
+  if (measure === 'absolute') {
+    const spent = fromBound(absoluteError(pieces));
+    return { total: Q.add(upper, spent), evaluation: spent, subnormal: null, runs: [] };
+  }
+  const r = Q.toDouble(upper) * (1 + 2 ** -50);
+  if (!(r < 1)) throw new Declined('bad-request', 'The relative error of this polynomial reaches one; ask for a higher degree or the absolute measure.');
+  const { relative, subnormal } = relativeError(pieces, r, arithmetic);
+  if (measure === 'ulp') {
+    const runs = binadeRuns(pieces, r, arithmetic);
+    const total = inUlp(polynomial, runs, problem, true, budget);
+    return { total, evaluation: nonNegative(Q.subtract(total, inUlp(polynomial, runs, problem, false, budget))), subnormal: below(subnormal, upper, problem), runs };
+  }
+  if (!Number.isFinite(relative)) throw new Declined('undecided', 'The rounding error relative to the function could not be bounded; ask for the absolute measure.');
+  // |computed - f| <= |p - f| + e |p| <= (r + e (1 + r)) |f|.
+  const spent = Q.multiply(fromBound(relative), Q.add(Q.ONE, upper));
+  return { total: Q.add(upper, spent), evaluation: spent, subnormal: below(subnormal, upper, problem), runs: [] };
+}
+
+const below = (evaluation: number | null, r: Rational, { arithmetic }: ProofProblem): Rational | null =>
+  evaluation === null ? null : Q.add(fromBound(evaluation), Q.multiply(r, smallestNormal(arithmetic.result)));
+
+/** Splits a total into what the best polynomial owes, what rounding its coefficients added, and what evaluation adds. */
+export function errorParts(proof: EvaluationProof, polynomial: CertifiedPolynomial, ideal: CertifiedPolynomial, problem: ProofProblem, budget: Budget): ProvedError {
+  const shared = { evaluation: proof.evaluation, total: proof.total, subnormal: proof.subnormal };
+  if (problem.measure !== 'ulp') {
+    const rounding = nonNegative(Q.subtract(polynomial.whole.upper, ideal.whole.upper));
+    return { ...shared, approximation: ideal.whole.upper, rounding, lower: polynomial.whole.lower };
+  }
+  const approximation = inUlp(ideal, proof.runs, problem, false, budget);
+  const actual = inUlp(polynomial, proof.runs, problem, false, budget);
+  // One ulp is at most 2 u |f| for normal numbers.
+  const lower = Q.divide(polynomial.whole.lower, Q.multiply(unitRoundoff(problem.arithmetic.result), Q.rational(2)));
+  return { ...shared, approximation, rounding: nonNegative(Q.subtract(actual, approximation)), lower };
+}

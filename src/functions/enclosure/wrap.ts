@@ -22,9 +22,10 @@ const MOST_BITS = 60_000;
 /** Bits that the argument itself knows; Infinity for exact ones. */
 const argumentBits = (x: Ball): number => (x.rad === 0n ? Infinity : Math.max(0, real.relativeAccuracy(x)));
 
-/** Raises the working precision until the result has the bits asked for, or the argument allows no more. */
+/** Raises the working precision until the result has the bits asked for, or the argument, which knows `limit` bits, allows no more. */
 function adaptive<T>(attempt: (bits: number) => T | null, accuracy: (value: T) => number, precision: number, limit: number): T | null {
-  let bits = precision + 16;
+  const wanted = Math.min(precision, limit + 24);
+  let bits = wanted + 16;
   let best: T | null = null;
   let bestAccuracy = -Infinity;
   for (let round = 0; round < 12 && bits <= Math.min(MOST_BITS, 40 * (precision + 64)); round++) {
@@ -35,7 +36,7 @@ function adaptive<T>(attempt: (bits: number) => T | null, accuracy: (value: T) =
       continue;
     }
     const got = accuracy(value);
-    if (got >= precision || got === Infinity) return value;
+    if (got >= wanted || got === Infinity) return value;
     if (limit === Infinity && got < 8) {
       // Nothing but rounding is left: the digits that cancel are not even known yet.
       if (best === null) best = value;
@@ -45,8 +46,10 @@ function adaptive<T>(attempt: (bits: number) => T | null, accuracy: (value: T) =
     if (best !== null && got <= bestAccuracy + 2) return best;
     best = value;
     bestAccuracy = got;
-    if (limit !== Infinity && (round >= 3 || (got > limit - 40 && round >= 1))) return best;
-    bits += Math.max(16, precision - got + 16);
+    // A wide argument: the loss is its own unless it is out of all proportion.
+    if (limit < precision && got > limit - 12) return best;
+    if (limit < precision && round >= 1) return best;
+    bits += Math.max(16, wanted - got + 16);
   }
   return best;
 }

@@ -22,6 +22,8 @@ interface CommonRequest {
   readonly complex?: boolean;
   readonly assume?: readonly string[];
   readonly budget_ms?: number;
+  /** Cursor or selection in `text`, where the text is a whole document and the expression has to be found in it. */
+  readonly selection?: { readonly start: number; readonly end: number };
 }
 
 export type Side = 'both' | 'right' | 'left';
@@ -40,8 +42,6 @@ export interface ExpandRequest extends CommonRequest {
   readonly measure?: Measure;
   /** A value at which function, sum and error are wanted. */
   readonly at?: string;
-  /** Cursor or selection in `text`, where the text is a whole document and the expression has to be found in it. */
-  readonly selection?: { readonly start: number; readonly end: number };
   /** Parts of the answer that cost extra time and are only made when asked for. */
   readonly details?: readonly Detail[];
 }
@@ -276,6 +276,8 @@ export interface GuardAnswer {
   readonly terms: number | null;
   readonly bound: { readonly series: string | null; readonly direct: string | null; readonly whole: string };
   readonly code: string;
+  /** The lines that the code needs at the head of its file. */
+  readonly imports?: readonly string[];
   readonly assumptions: readonly string[];
 }
 

@@ -10,6 +10,7 @@ import { expansionAnswer } from './expansionAnswer.ts';
 import { targetOf } from './conditions.ts';
 import { equationOf, functionOf, pointOf, questionOf, readPoint, variableOf } from './question.ts';
 import { insertionAnswer } from './insertion.ts';
+import { integralAnswer } from './integralValue.ts';
 import { readingAnswer } from './reading.ts';
 import type { EngineTools } from './resources.ts';
 import { candidatesOf, type SourceFormula, sourceFormula } from './source.ts';
@@ -92,6 +93,8 @@ function rootOf(request: ExpandRequest, source: SourceFormula, run: Run, time: B
 export async function askExpand(request: ExpandRequest, tools: EngineTools, time: Budget): Promise<Outcome<ExpandAnswer>> {
   const source = await sourceFormula(request, tools);
   if (!source.ok) return source;
+  const value = integralAnswer(functionOf(source.value.expression), request, time);
+  if (value) return value;
   const expander = expanderOf(request, source.value, time);
   if (!expander.ok) return placed(expander.error, request, source.value);
   const answer = expansionAnswer(expander.value.first);

@@ -100,6 +100,10 @@ export function specialModel<T>(id: string, args: readonly Expression[], models:
   const argument = models[index];
   if (argument === undefined || args.filter((arg) => !isConstant(arg)).length !== 1) return null;
   if (id === 'digamma' || id === 'polygamma') return polygammaModel(id, args, argument, n, m);
+  if (id === 'expIntegralE' && index === 1) {
+    const value = exponentialIntegralModel(args, argument, n, m);
+    if (value !== null) return value;
+  }
   const domain = domainOf(id, args, index);
   const u = m.regular(argument);
   if (domain === null || u === null || !describe(id)?.enclose) return null;
@@ -126,7 +130,9 @@ export function specialModel<T>(id: string, args: readonly Expression[], models:
   const room = roomOf(domain, real.toDouble(ball));
   const precision = n.precision <= 53 ? 64 : n.precision;
   for (const factor of [4, 2.5, 1.6, 1.25]) {
-    const radius = Math.min(domain.kind === 'entire' ? Math.max(factor * D, 0.5) : Math.max(factor * D, Math.min(0.5 * room, 4)), 0.97 * room);
+    // Powers of two where there is room: neighbouring questions then share their series.
+    const wanted = 2 ** Math.ceil(Math.log2(Math.max(factor * D, 0.25)));
+    const radius = Math.min(domain.kind === 'entire' ? wanted : Math.max(factor * D, Math.min(0.5 * room, 4)), 0.97 * room);
     if (!(radius > 1.1 * D)) continue;
     const series = seriesOf(id, parameters, index, ball, radius, precision, m.length);
     if (series === null) continue;
@@ -174,10 +180,10 @@ function computeSeries(id: string, parameters: readonly ComplexBall[], index: nu
     args.splice(index, 0, z);
     return f(args, bits);
   };
-  const bound = maximumOnCircle(at, centre, radius);
+  const bound = majorant(id, parameters, index, centre, radius) ?? maximumOnCircle(at, centre, radius);
   if (bound === null) return null;
   // M points on half the radius; f is real on the real axis, so the lower half mirrors the upper.
-  const half = Math.ceil((precision + 12) / 2);
+  const half = precision <= 64 ? 28 : Math.ceil((precision + 12) / 2);
   const M = 2 * half;
   const work = precision + 16;
   const c = complex.arithmetic(work);
@@ -219,6 +225,41 @@ function computeSeries(id: string, parameters: readonly ComplexBall[], index: nu
   const first = at(complex.fromReal(centre), work);
   if (first !== null && coefficients[0]) coefficients[0] = real.intersection(first.re, coefficients[0], work) ?? first.re;
   return { radius, coefficients, bound: real.upperEnd(bound) };
+}
+
+/**
+ * max |f| on the circle from one real value, where a bound by a positive function is known: J and I of integer order by I at |z| (power series), K by K at Re z (DLMF 10.32.9),
+ * Ai and Bi by Bi at |z| (power series), zeta by zeta at Re s > 1, polylog and K(m) by themselves at |z| < 1 (positive coefficients).
+ */
+function majorant(id: string, parameters: readonly ComplexBall[], index: number, centre: Ball, radius: number): Ball | null {
+  const real1 = (name: string, x: Ball): Ball | null => {
+    const args = parameters.map((z) => z.re);
+    args.splice(index, 0, x);
+    const value = describe(name)?.encloseReal?.(args, 64) ?? null;
+    return value === null ? null : real.upperEnd(real.absolute(value));
+  };
+  const size = real.upperEnd(real.add(real.absolute(centre), real.fromDouble(radius), 64));
+  const left = real.lowerEnd(real.subtract(centre, real.fromDouble(radius), 64));
+  const inUnit = real.compare(size, real.ONE) === -1;
+  switch (id) {
+    case 'besselJ':
+    case 'besselI': {
+      const [order] = parameters;
+      return order && real.isExact(order.re) && real.floorOf(order.re) !== null && real.isNonNegative(order.re) && real.compare(order.re, real.fromInteger(real.floorOf(order.re) ?? -1n)) === 0 ? real1('besselI', size) : null;
+    }
+    case 'besselK':
+      return real.isPositive(left) ? real1('besselK', left) : null;
+    case 'airyAi':
+    case 'airyBi':
+      return real1('airyBi', size);
+    case 'zeta':
+      return real.compare(left, real.ONE) === 1 ? real1('zeta', left) : null;
+    case 'polylog':
+    case 'ellipticKParameter':
+      return inUnit ? real1(id, size) : null;
+    default:
+      return null;
+  }
 }
 
 /** An upper bound of |f| on |z - centre| = radius by rectangles over arcs of the upper half. */
@@ -265,4 +306,33 @@ function hornerWithTail<T>(coefficients: readonly T[], remainder: T, offset: Mod
   if (last === null) return null;
   const tail = n.r.multiply(last.range, remainder);
   return m.add(sum, { valuation: offset.valuation * K, coefficients: [], tail, range: tail });
+}
+
+/** E_k for whole k >= 1 on positive arguments through E_k' = -E_(k-1), E_0 = e^-u/u (DLMF 8.19.13). */
+function exponentialIntegralModel<T>(args: readonly Expression[], argument: Model<T>, n: Numbers<T>, m: ModelArithmetic<T>): Model<T> | null {
+  const { r } = n;
+  const [order] = args;
+  const degree = order?.kind === 'number' && order.value.den === 1n ? Number(order.value.num) : 0;
+  const u = m.regular(argument);
+  if (u === null || degree < 1 || degree > 8 || !r.isPositive(u.range)) return null;
+  const P = m.polynomialPart(u);
+  const hull = r.union(u.range, P.range);
+  if (!r.isPositive(hull)) return null;
+  const start = (k: number): T | null => n.value(build.call('expIntegralE', build.number(k), build.symbol('argument')), new Map([['argument', u.coefficients[0] ?? r.zero]]));
+  const chain = (argumentModel: Model<T>, k: number): Model<T> | null => {
+    if (k === 0) {
+      const e = m.elementary('exp', m.negate(argumentModel));
+      return e && m.divide(e, argumentModel);
+    }
+    const slope = chain(argumentModel, k - 1);
+    const value = start(k);
+    return slope === null || value === null ? null : m.integrate(argumentModel, value, m.negate(slope), null);
+  };
+  const slope = chain(P, degree - 1);
+  const value = start(degree);
+  if (slope === null || value === null) return null;
+  // |E_(k-1)(x)| <= e^-x/x on the hull, for the part that the polynomial leaves out.
+  const e = r.exp(r.negate(hull));
+  const size = e && r.divide(e, hull);
+  return m.integrate(u, value, m.negate(slope), size && r.negate(r.union(r.zero, size)));
 }

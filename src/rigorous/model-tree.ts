@@ -91,8 +91,10 @@ export function logModelOfTree<T>(e: Expression, context: ModelTreeContext<T>): 
       case 'sum':
         return fold(node.terms, (x, y) => logs.add(x, y));
       case 'product':
-        return fold(node.factors, (x, y) => logs.multiply(x, y));
+        return withExponents(node) ?? fold(node.factors, (x, y) => logs.multiply(x, y));
       case 'quotient': {
+        const together = withExponents(node);
+        if (together !== null) return together;
         const [numerator, denominator] = [visit(node.numerator), visit(node.denominator)];
         if (denominator === null) return withoutGrowth(node.numerator, node.denominator);
         if (numerator === null) return null;
@@ -114,6 +116,49 @@ export function logModelOfTree<T>(e: Expression, context: ModelTreeContext<T>): 
         return null;
     }
   };
+  /** A product with several exponentials of unbounded arguments: the arguments are added first, so that what cancels between them does. Null where there are not two of them. */
+  const withExponents = (node: Expression): LogModel<T> | null => {
+    const exponents: LogModel<T>[] = [];
+    const others: { readonly factor: LogModel<T>; readonly below: boolean }[] = [];
+    let grows = 0;
+    const take = (e: Expression, below: boolean): boolean => {
+      if (e.kind === 'product') return e.factors.every((factor) => take(factor, below));
+      if (e.kind === 'quotient') return take(e.numerator, below) && take(e.denominator, !below);
+      const exponent = e.kind === 'power' && e.base.kind === 'constant' && e.base.name === 'e' ? e.exponent : e.kind === 'call' && e.function === 'exp' ? (e.args[0] ?? null) : null;
+      if (exponent !== null && !isConstant(exponent)) {
+        const u = visit(exponent);
+        if (u === null) return false;
+        if (u.some((f) => f.valuation < 0)) grows += 1;
+        exponents.push(below ? u.map((f) => m.negate(f)) : u);
+        return true;
+      }
+      if (e.kind === 'call' && context.rewrite && !isConstant(e)) {
+        const models: Model<T>[] = [];
+        for (const arg of e.args) {
+          const f = pure(visit(arg));
+          if (f === null) return false;
+          models.push(f);
+        }
+        const rewritten = models.some((f) => f.valuation < 0) ? context.rewrite(e.function, e.args, models) : null;
+        if (rewritten) return take(rewritten, below);
+      }
+      const factor = visit(e);
+      if (factor === null) return false;
+      others.push({ factor, below });
+      return true;
+    };
+    if (!unbounded || !take(node, false) || grows < 2) return null;
+    let total: LogModel<T> | null = [m.constant(a.zero)];
+    for (const u of exponents) total = logs.add(total, u);
+    let result: LogModel<T> | null = logs.elementary('exp', total);
+    for (const { factor, below } of others) {
+      const part: LogModel<T> | null = below ? logs.power(factor, { num: -1n, den: 1n }) : factor;
+      result = result && part && logs.multiply(result, part);
+    }
+    return result;
+  };
+  /** Only where a symbol itself grows without bound are products taken apart. */
+  const unbounded = [...environment.values()].some((leaf) => leaf.valuation < 0);
   /** N/D where D is a sum with e^u, u growing: N e^-u / (D e^-u), the second computed term by term. */
   const withoutGrowth = (numerator: Expression, denominator: Expression): LogModel<T> | null => {
     const u = growingExponent(denominator);

@@ -2,9 +2,11 @@
 import { build, dependsOn, freeSymbols, mapChildren, Q, walk, type Expression, type Span } from '../expression/index.ts';
 import type { Finding } from '../protocol.ts';
 import { toPlain } from '../write/index.ts';
+import { judgeAccuracy, statementIn } from './accuracy.ts';
 import { type Accused, blame, isOneChangeAway } from './blame.ts';
 import { type Claim, isTranscendental } from './claims.ts';
 import type { FoundFormula } from './formulas.ts';
+import { halfUnit } from './decimals.ts';
 import { explicitPart, type General, generalIn, judgeGeneral } from './generalClaims.ts';
 import { type Hint, judge, type Judgement } from './judge.ts';
 import { calibrated } from './calibrate.ts';
@@ -31,23 +33,52 @@ interface Tried {
  * The finding for one claim with its function known; null where it turns out not to be a claim (an identity, an equation to solve).
  * `lenient`: the function is only presumed, so that nothing fails.
  */
-export function findingOf(printed: Claim, given: Expression, asked: Asked, place: Place, options: { readonly lenient?: string } = {}): Finding | null {
+export function findingOf(printed: Claim, given: Expression, asked: Asked, place: Place, options: { readonly lenient?: string } = {}): readonly Finding[] {
+  const main = mainFinding(printed, given, asked, place, options);
+  if (!main) return options.lenient === undefined ? fittedFinding(printed, given, asked, place) : [];
+  const accuracy = main.setting && options.lenient === undefined ? accuracyFinding(printed, given, main.setting, place) : null;
+  // A fitted polynomial is judged by the accuracy that is claimed for it.
+  if (accuracy && accuracy.verdict !== 'undecided' && main.finding.verdict === 'fails' && main.fitted) return [accuracy];
+  return accuracy ? [main.finding, accuracy] : [main.finding];
+}
+
+/** A polynomial with decimals that is no expansion: only the accuracy stated for it is judged. */
+function fittedFinding(printed: Claim, given: Expression, asked: Asked, place: Place): readonly Finding[] {
+  if (printed.relation === 'define' || hasMarks(printed.side) || !hasDecimals(printed.side)) return [];
+  const [first] = settingsFor(given, printed.side, asked, place.around).filter((c) => isTranscendental(given, c.setting.variable));
+  const accuracy = first && accuracyFinding(printed, given, first.setting, place);
+  return accuracy && accuracy.verdict !== 'undecided' ? [accuracy] : [];
+}
+
+const hasDecimals = (side: Expression): boolean => [...walk(side)].some((n) => n.kind === 'number' && halfUnit(n) !== null);
+
+interface Main {
+  readonly finding: Finding;
+  /** Null where no setting was decided on. */
+  readonly setting: Setting | null;
+  /** The printed side has decimals and no remainder mark. */
+  readonly fitted: boolean;
+}
+
+function mainFinding(printed: Claim, given: Expression, asked: Asked, place: Place, options: { readonly lenient?: string }): Main | null {
+  const only = (finding: Finding | null): Main | null => finding && { finding, setting: null, fitted: false };
+  const settled = (finding: Finding | null, setting: Setting, side: Expression): Main | null => finding && { finding, setting, fitted: !hasMarks(side) && hasDecimals(side) };
   const all = settingsFor(given, printed.side, asked, place.around);
   // Where the function does not hold the quantity in which the printed side runs, one of the two names it differently.
   const choices = all.filter((c) => dependsOn(given, c.setting.variable) || mentionsFunction(given));
-  if (choices.length === 0) return all.length > 0 && hasMarks(printed.side) ? undecided(printed, place, `The function does not hold ${all[0]?.setting.variable ?? 'the variable'}, in which the printed side runs.`) : null;
+  if (choices.length === 0) return all.length > 0 && hasMarks(printed.side) ? only(undecided(printed, place, `The function does not hold ${all[0]?.setting.variable ?? 'the variable'}, in which the printed side runs.`)) : null;
   const tried: Tried[] = [];
   for (const choice of choices) {
     const { f, claim } = prepared(given, printed, choice.setting);
     const general = generalIn(f, claim.side, choice.setting);
     if (general) {
       const finding = generalFinding(claim, f, general, choice, place, options);
-      if (finding !== 'next') return finding;
+      if (finding !== 'next') return only(finding);
       continue;
     }
     const judgement = judge(f, claim.side, claim.relation, choice.setting);
     if (judgement.kind === 'identity') return null;
-    if (judgement.kind === 'holds') return holding(claim, f, choice.setting, judgement, place, options.lenient);
+    if (judgement.kind === 'holds') return settled(holding(claim, f, choice.setting, judgement, place, options.lenient), choice.setting, claim.side);
     tried.push({ choice, judgement });
   }
   // A guess that fails counts only if no likelier guess is open, and if the terms show that it is the right one.
@@ -58,20 +89,40 @@ export function findingOf(printed: Claim, given: Expression, asked: Asked, place
   const best = tried.reduce<Tried | null>((a, b) => (a === null || matchedIn(b) > matchedIn(a) ? b : a), null);
   if (!best) return null;
   const { f, claim } = prepared(given, printed, best.choice.setting);
-  if (best.judgement.kind === 'undecided') return meant(claim, f, best.choice.setting) ? undecided(claim, place, best.judgement.reason) : null;
+  if (best.judgement.kind === 'undecided') return meant(claim, f, best.choice.setting) ? only(undecided(claim, place, best.judgement.reason)) : null;
   if (best.judgement.kind !== 'fails') return null;
-  if (!isHeldAgainst(claim, f, best, tried.length > 1, place)) return meant(claim, f, best.choice.setting) && hasMarks(claim.side) ? undecided(claim, place, 'It is not plain in which quantity, and where, this is an expansion; say so with a note such as leading-order: small x.') : null;
+  if (!isHeldAgainst(claim, f, best, tried.length > 1, place)) return meant(claim, f, best.choice.setting) && hasMarks(claim.side) ? only(undecided(claim, place, 'It is not plain in which quantity, and where, this is an expansion; say so with a note such as leading-order: small x.')) : null;
   const unknown = unknownSymbols(f, claim.side, best.choice.setting);
   if (unknown.length > 0) {
     const meaning = withConstants(f, claim, unknown, best.choice.setting);
-    if (meaning?.judgement.kind === 'holds') return holding(meaning.claim, f, best.choice.setting, meaning.judgement, place, options.lenient);
-    if (meaning?.judgement.kind === 'undecided') return undecided(claim, place, meaning.judgement.reason);
-    if (meaning?.judgement.kind === 'fails' && options.lenient === undefined && !blamesUnknown(meaning.judgement, meaning.left, best.choice.setting)) return failing(meaning.claim, f, best.choice.setting, meaning.judgement, place);
-    if (blamesUnknown(best.judgement, unknown, best.choice.setting)) return undecided(claim, place, `What ${unknown.join(', ')} stands for is not said in this document.`);
+    if (meaning?.judgement.kind === 'holds') return settled(holding(meaning.claim, f, best.choice.setting, meaning.judgement, place, options.lenient), best.choice.setting, meaning.claim.side);
+    if (meaning?.judgement.kind === 'undecided') return only(undecided(claim, place, meaning.judgement.reason));
+    if (meaning?.judgement.kind === 'fails' && options.lenient === undefined && !blamesUnknown(meaning.judgement, meaning.left, best.choice.setting)) return only(failing(meaning.claim, f, best.choice.setting, meaning.judgement, place));
+    if (blamesUnknown(best.judgement, unknown, best.choice.setting)) return only(undecided(claim, place, `What ${unknown.join(', ')} stands for is not said in this document.`));
   }
-  if (options.lenient !== undefined) return undecided(claim, place, `Taken as ${options.lenient} the claim does not hold; its definition does not stand in this document.`);
-  return failing(claim, f, best.choice.setting, best.judgement, place);
+  if (options.lenient !== undefined) return only(undecided(claim, place, `Taken as ${options.lenient} the claim does not hold; its definition does not stand in this document.`));
+  return settled(failing(claim, f, best.choice.setting, best.judgement, place), best.choice.setting, claim.side);
 }
+
+/** The tolerance stated beside the claim, with the interval it is stated for. */
+function accuracyFinding(printed: Claim, given: Expression, setting: Setting, place: Place): Finding | null {
+  const end = Math.min(place.text.length, Math.max(place.formula.span.end, printed.span.end) + ACCURACY_REACH);
+  const paragraph = place.text.slice(printed.span.end, end).search(/\n\s*\n/);
+  const statement = statementIn(place.text, printed.span.end, paragraph < 0 ? end : printed.span.end + paragraph, place.around.conditions, setting.variable);
+  if (!statement) return null;
+  const { f, claim } = prepared(given, printed, setting);
+  const verdict = judgeAccuracy(statement, f, withoutMarks(claim.side), setting);
+  const base = { ...statement.place, claim: printed.span, found: '', fix: null, ...labelOf(place) };
+  switch (verdict.kind) {
+    case 'holds':
+      return { ...base, verdict: 'holds', severity: 'none', reason: `Holds: the error on this interval is proved to be at most ${verdict.error}.` };
+    case 'fails':
+      return { ...base, verdict: 'fails', severity: 'error', reason: `The error on this interval reaches ${verdict.error}.`, found: verdict.error, fix: { ...statement.place, text: statement.percent ? verdict.text.replace('%', statement.printed.includes('\\%') ? '\\%' : '%') : verdict.text } };
+    case 'undecided':
+      return { ...base, verdict: 'undecided', severity: 'hint', reason: verdict.reason };
+  }
+}
+const ACCURACY_REACH = 160;
 
 /** Short writings written out, and a factor that only the printed side has fixed by the leading terms. */
 function prepared(given: Expression, printed: Claim, setting: Setting): { readonly f: Expression; readonly claim: Claim } {

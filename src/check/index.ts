@@ -55,8 +55,7 @@ export function check(parts: CheckParts, budget: Budget): Outcome<Checked> {
         const time = share(budget);
         const local = withNote({ ...asked, budget: time }, note, parts);
         try {
-          const finding = checkClaim(claim, given, definitions, local, place);
-          if (finding) findings.push(finding);
+          findings.push(...checkClaim(claim, given, definitions, local, place));
         } catch (error) {
           if (!(error instanceof Declined)) throw error;
           findings.push({ ...claim.span, claim: claim.span, verdict: 'undecided', severity: 'hint', reason: error.failure.message, found: '', fix: null });
@@ -77,27 +76,27 @@ function claimsIn(formula: FoundFormula, given: Expression | null): readonly Cla
   return chains.flatMap(claimsOf);
 }
 
-function checkClaim(claim: Claim, given: Expression | null, definitions: Definitions, asked: Asked, place: Place): Finding | null {
+function checkClaim(claim: Claim, given: Expression | null, definitions: Definitions, asked: Asked, place: Place): readonly Finding[] {
   const printedName = claim.function ? wordOf(claim.function, place.text) : null;
   if (claim.function && printedName === null) return findingOf(claim, claim.function, asked, place);
   if (given) return findingOf(claim, given, asked, place);
   const own = claim.name ?? claim.function;
-  if (!own) return null;
+  if (!own) return [];
   if (isGridName(own)) return findingOf(claim, own, asked, place, { lenient: 'values of a function on a grid' });
-  let failed: Finding | null = null;
+  let failed: readonly Finding[] = [];
   for (const value of resolve(definitions, own, place.formula.span.start)) {
-    const finding = findingOf(claim, value, asked, place);
-    if (finding?.verdict === 'holds') return finding;
-    failed ??= finding;
+    const found = findingOf(claim, value, asked, place);
+    if (found[0]?.verdict === 'holds') return found;
+    if (failed.length === 0) failed = found;
   }
-  if (failed) return failed;
+  if (failed.length > 0) return failed;
   const printed = printedName ?? place.text.slice(own.span?.start ?? 0, own.span?.end ?? 0).replace(/\s/g, '');
   for (const quantity of quantitiesNamed(printed, symbolsOf(claim.side))) {
     const variable = asked.variable ?? build.symbol(quantity.variable);
-    const finding = findingOf(claim, quantity.value, { ...asked, variable, point: asked.point ?? build.number(0) }, place, { lenient: quantity.title });
-    if (finding?.verdict === 'holds') return finding;
+    const found = findingOf(claim, quantity.value, { ...asked, variable, point: asked.point ?? build.number(0) }, place, { lenient: quantity.title });
+    if (found[0]?.verdict === 'holds') return found;
   }
-  return hasMarks(claim.side) || claim.relation === 'about' ? unresolved(claim, place) : null;
+  return hasMarks(claim.side) || claim.relation === 'about' ? [unresolved(claim, place)] : [];
 }
 
 /** Capital letters without a gap (KE) that were read as a product are one name. */

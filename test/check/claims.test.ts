@@ -157,3 +157,20 @@ describe('documents', () => {
     expect(outcome).toMatchObject({ ok: false, error: { code: 'bad-request' } });
   });
 });
+
+describe('tolerances stated beside a claim', () => {
+  // Largest errors by the alternating series: 0.5^5/120 = 2.604e-4, 0.5^2/2 = 0.125 (1 against cos 0.5 = 0.87758: 13.9 %).
+  it.each([
+    ['For $|x| < 0.5$ we have $\\sin x \\approx x - \\frac{x^3}{6}$ with an error below $3\\cdot 10^{-4}$ when $|x| < 0.5$.', 'holds', null],
+    ['$\\sin x \\approx x - \\frac{x^3}{6}$ with an error below $10^{-4}$ for $|x| < 0.5$.', 'fails', '10^{-4}'],
+    ['$\\cos x \\approx 1$ within 14 % for $|x| \\le 0.5$', 'none', null],
+    ['$\\cos x \\approx 1 - x^2/2$ within 0.1 % for $|x| \\le 0.5$', 'fails', '0.1 %'],
+    ['$\\cos x \\approx 1 - x^2/2$ within 0.3 % for $|x| \\le 0.5$', 'holds', null],
+    ['$\\sin x \\approx 0.9997x - 0.16x^3$ with an error of at most 0.005 for $|x| < 1$', 'holds', null],
+  ])('%s', (text, verdict, under) => {
+    const found = findings(text, { language: 'markdown' });
+    expect(verdictOf(found)).toBe(verdict);
+    const failure = found.find((f) => f.verdict === 'fails');
+    expect(failure ? text.slice(failure.start, failure.end) : null).toBe(under);
+  });
+});

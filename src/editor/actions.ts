@@ -125,6 +125,7 @@ export function proposalTitle(proposal: Proposal): string {
     replace: vscode.l10n.t('Replace by {0}', preview),
     polynomial: vscode.l10n.t('Replace by polynomial {0}', preview),
     comment: vscode.l10n.t('Insert comment "{0}" above', preview),
+    helper: vscode.l10n.t('Replace by {0}', preview),
   };
   return titles[proposal.kind];
 }

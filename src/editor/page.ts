@@ -14,6 +14,8 @@ import { shorten, sourceName } from './words.ts';
 
 const DETAILS: readonly Detail[] = ['reading', 'ladder', 'reach', 'plot'];
 const FOLLOW_PAUSE_MS = 250;
+/** Fits and guards are asked for by hand and may take longer than a hover. */
+const LEAST_CODE_BUDGET_MS = 20_000;
 const HISTORY_LENGTH = 12;
 /** Controls that hold for every expression; the others are about one. */
 const LASTING: readonly (keyof Question)[] = ['interval', 'tolerance', 'measure'];
@@ -36,10 +38,12 @@ export class Page implements vscode.Disposable {
   #focus: Focus | null = null;
   #chosen: Question = {};
   #mode: Mode = 'expand';
-  #controls: CodeControls = { from: '', to: '', tolerance: '1e-6', measure: 'relative', format: 'binary64', point: '0' };
+  #controls: CodeControls = { from: '', to: '', tolerance: '1e-6', measure: 'absolute', format: '', point: '0', variable: '' };
   #pinned = false;
   #shown: Shown = { kind: 'nothing' };
   #consultation: Consultation | null = null;
+  /** The version that the proposals of a form for code rest on. */
+  #ground = -1;
   #proposals: readonly Proposal[] = [];
   #history: readonly Remembered[] = [];
   #stale: string | null = null;
@@ -65,9 +69,27 @@ export class Page implements vscode.Disposable {
     const same = this.#focus?.uri.toString() === document.uri.toString() && this.#focus.text === text && text !== '';
     const lasting = Object.fromEntries(Object.entries(this.#chosen).filter(([key]) => LASTING.includes(key as keyof Question)));
     this.#chosen = chosen ?? (same ? this.#chosen : lasting);
+    const fresh = !same || this.#mode === 'expand';
     this.#focus = { uri: document.uri, place, text };
     this.#mode = mode;
+    if (mode !== 'expand' && fresh) await this.#prefill(document, place);
     await this.#refresh();
+  }
+
+  /** What notes, memory and settings say about the expression fills the form; what is not said stays empty. */
+  async #prefill(document: vscode.TextDocument, place: Place): Promise<void> {
+    const { answer, asked, candidates } = await this.#services.consultant.consult(document, place, ['reading']);
+    const reading = answer.ok ? answer.reading : undefined;
+    const [from, to] = asked.interval ?? ['', ''];
+    this.#controls = {
+      ...this.#controls,
+      from,
+      to,
+      tolerance: asked.tolerance ?? '1e-6',
+      measure: asked.measure ?? 'absolute',
+      point: reading?.point ?? asked.point ?? '0',
+      variable: reading?.variable ?? asked.variable ?? (candidates.length === 1 ? (candidates[0] ?? '') : ''),
+    };
   }
 
   async choose(question: Question): Promise<void> {
@@ -102,8 +124,7 @@ export class Page implements vscode.Disposable {
       case 'choose':
         return this.choose(message.question);
       case 'mode':
-        this.#mode = message.mode;
-        return this.#refresh();
+        return this.#turnTo(message.mode);
       case 'code':
         this.#controls = message.controls;
         return this.#refresh();
@@ -122,6 +143,13 @@ export class Page implements vscode.Disposable {
         this.#abort?.abort();
         return undefined;
     }
+  }
+
+  async #turnTo(mode: Mode): Promise<void> {
+    const document = this.#document();
+    if (document && this.#focus && mode !== 'expand' && this.#mode === 'expand') await this.#prefill(document, this.#focus.place);
+    this.#mode = mode;
+    await this.#refresh();
   }
 
   /** After a reload: what was kept; on first sight: the active editor. */
@@ -221,26 +249,35 @@ export class Page implements vscode.Disposable {
     let answer: FitAnswer | GuardAnswer | ErrorAnswer | null = null;
     const language = engineLanguage(document);
     const settings = settingsFor(document);
-    const common = { text: focus.text, language, format: controls.format, emit: language === 'plain' || !isCode(language) ? 'c' : language, budget_ms: settings.budget } as const;
-    const variable = this.#chosen.variable ?? this.#services.memory.recall(document.uri).variable;
-    const named = variable === undefined ? {} : { variable };
+    const { place } = focus;
+    const common = {
+      text: document.getText(),
+      selection: place,
+      language,
+      emit: language === 'plain' || !isCode(language) ? 'c' : language,
+      budget_ms: Math.max(settings.budget, LEAST_CODE_BUDGET_MS),
+      ...(controls.format === '' ? {} : { format: controls.format }),
+      ...(controls.variable === '' ? {} : { variable: controls.variable }),
+    } as const;
     if (mode === 'fit' && interval) {
-      answer = await this.#services.client.ask<FitAnswer>({ ask: 'fit', ...common, ...named, interval, tolerance: controls.tolerance, measure: controls.measure, form: settings.form }, signal);
+      answer = await this.#services.client.ask<FitAnswer>({ ask: 'fit', ...common, interval, tolerance: controls.tolerance, measure: controls.measure, form: settings.form }, signal);
     } else if (mode === 'guard') {
-      answer = await this.#services.client.ask<GuardAnswer>({ ask: 'guard', ...common, ...named, point: controls.point || '0', ...(interval ? { interval } : {}) }, signal);
+      answer = await this.#services.client.ask<GuardAnswer>({ ask: 'guard', ...common, point: controls.point || '0', ...(interval ? { interval } : {}) }, signal);
     }
+    const proposals = answer?.ok ? await this.#services.client.consult({ desk: 'replacement', text: common.text, language, place, code: answer.code, imports: answer.imports ?? [], argument: controls.variable }) : null;
     if (turn !== this.#turn || document.version !== version) return;
     this.#stale = null;
     this.#consultation = null;
+    this.#ground = version;
     this.#shown = mode === 'fit' ? { kind: 'fit', answer: answer as FitAnswer | ErrorAnswer | null, controls } : { kind: 'guard', answer: answer as GuardAnswer | ErrorAnswer | null, controls };
-    this.#proposals = answer?.ok ? [{ kind: 'replace', preview: firstLine(answer.code), edits: [{ ...focus.place, text: answer.code }] }] : [];
+    this.#proposals = proposals && 'proposals' in proposals ? proposals.proposals : [];
   }
 
   async #apply(index: number): Promise<void> {
     const proposal = this.#proposals[index];
     const document = this.#document();
     if (!proposal || !document || !this.#focus) return;
-    const version = this.#consultation?.version ?? document.version;
+    const version = this.#consultation?.version ?? this.#ground;
     const edits: readonly TextEdit[] = proposal.edits;
     await applyChecked({ ...groundOf(document, [this.#focus.place, ...edits]), version }, edits);
   }
@@ -322,6 +359,7 @@ function buttonLabel({ kind }: Proposal): string {
     replace: vscode.l10n.t('Replace'),
     polynomial: vscode.l10n.t('Replace by polynomial'),
     comment: vscode.l10n.t('Insert comment above'),
+    helper: vscode.l10n.t('Replace by a function'),
   };
   return labels[kind];
 }

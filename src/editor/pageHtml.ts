@@ -4,7 +4,8 @@ import { WORDS } from '../webview/words.ts';
 
 export const pageRoots = (extension: vscode.Uri): vscode.Uri[] => [vscode.Uri.joinPath(extension, 'dist')];
 
-export function pageHtml(webview: vscode.Webview, extension: vscode.Uri): string {
+/** `home` tells the page which ground it stands on. */
+export function pageHtml(webview: vscode.Webview, extension: vscode.Uri, home: 'view' | 'tab'): string {
   const nonce = randomNonce();
   const file = (name: string): string => webview.asWebviewUri(vscode.Uri.joinPath(extension, 'dist', name)).toString();
   const words = Object.fromEntries(Object.entries(WORDS).map(([key, text]) => [key, vscode.l10n.t(text)]));
@@ -18,7 +19,7 @@ export function pageHtml(webview: vscode.Webview, extension: vscode.Uri): string
 <title>${escapeAttribute(vscode.l10n.t('Expansion'))}</title>
 <link rel="stylesheet" href="${escapeAttribute(file('webview.css'))}">
 </head>
-<body>
+<body data-home="${home}">
 <main id="page" data-words="${escapeAttribute(JSON.stringify(words))}"></main>
 <script nonce="${nonce}" src="${escapeAttribute(file('webview.js'))}"></script>
 </body>

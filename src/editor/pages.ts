@@ -66,7 +66,7 @@ export class Pages implements vscode.Disposable {
       page.dispose();
       if (this.#view?.page === page) this.#view = null;
     });
-    view.webview.html = pageHtml(view.webview, this.#services.context.extensionUri);
+    view.webview.html = pageHtml(view.webview, this.#services.context.extensionUri, 'view');
     for (const resolve of this.#waiting.splice(0)) resolve(page);
   }
 
@@ -79,6 +79,6 @@ export class Pages implements vscode.Disposable {
       page.dispose();
       if (this.#tab?.page === page) this.#tab = null;
     });
-    panel.webview.html = pageHtml(panel.webview, this.#services.context.extensionUri);
+    panel.webview.html = pageHtml(panel.webview, this.#services.context.extensionUri, 'tab');
   }
 }

@@ -39,10 +39,11 @@ const COMMON: Readonly<Record<string, Check>> = {
   complex: flag,
   assume: texts,
   budget_ms: count(1, 3_600_000),
+  selection,
 };
 const MEASURE = oneOf('absolute', 'relative');
 const SPECIFIC: Readonly<Record<Request['ask'], Readonly<Record<string, Check>>>> = {
-  expand: { terms: count(1, 10_000), order: numberOrText, interval: ends, tolerance: positive, measure: MEASURE, at: numberOrText, details: texts, selection },
+  expand: { terms: count(1, 10_000), order: numberOrText, interval: ends, tolerance: positive, measure: MEASURE, at: numberOrText, details: texts },
   fit: {
     interval: ends,
     tolerance: positive,

@@ -119,8 +119,9 @@ export function codeControls(kind: 'fit' | 'guard', controls: CodeControls, sett
     change(part);
     settle(current);
   };
-  const formats: readonly (readonly [string, string])[] = ['binary64', 'binary32', 'binary16', 'bfloat16'].map((name) => [name, name] as const);
+  const formats: readonly (readonly [string, string])[] = [['', t('asInCode')], ...['binary64', 'binary32', 'binary16', 'bfloat16'].map((name) => [name, name] as const)];
   const shared: Child[] = [
+    field('variable', t('argument'), entry(controls.variable, (variable) => change({ variable }))),
     h(
       'div',
       { class: 'field', role: 'group', 'aria-label': t('interval') },

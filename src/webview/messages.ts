@@ -10,8 +10,10 @@ export interface CodeControls {
   readonly to: string;
   readonly tolerance: string;
   readonly measure: FitMeasure;
+  /** Empty: as the code around says. */
   readonly format: string;
   readonly point: string;
+  readonly variable: string;
 }
 
 export type Shown =

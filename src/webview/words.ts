@@ -77,6 +77,8 @@ export const WORDS = {
   stale: 'The text has changed since.',
   compute: 'Compute',
   format: 'format',
+  asInCode: 'as in the code',
+  argument: 'argument',
   degree: 'degree {0}',
   taylor: 'a truncated expansion would need degree {0}',
   approximation: 'approximation',

@@ -122,6 +122,23 @@ export const scenes = {
     await waitForText(page, 'return sqrt(1.0 + slope * slope)');
   },
 
+  'C: a call is replaced by a fitted polynomial through the page': async (page) => {
+    await select(page, source('controller.c'), 'sinf(angle)');
+    await runCommand(page, 'Leading Order: Replace Call by Polynomial');
+    const frame = await expansionFrame(page, '#compute');
+    await frame.locator('#from').fill('-0.5');
+    await frame.locator('#to').fill('0.5');
+    await frame.locator('#tolerance').fill('1e-6');
+    await frame.locator('#compute').click();
+    await frame.locator('#apply-0').waitFor({ timeout: 60_000 });
+    await pageSays(frame, 'binary32');
+    await frame.locator('#apply-0').click();
+    const text = await waitForText(page, '1.8f * sin_approximation(angle)');
+    holds(/sin_approximation\(float \w+\)[^]*float swing_correction/.test(text), `the helper does not stand before its caller: ${text}`);
+    await undoTo(page, 'sin_approximation', 'return 1.8f * sinf(angle);');
+    await frame.locator('#mode-expand').click();
+  },
+
   'C: plain arithmetic has no hover': async (page) => {
     const at = placeOf(source('controller.c'), 'u * u / 6.0');
     await goTo(page, at.line, at.column + 2);

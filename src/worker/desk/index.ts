@@ -3,6 +3,7 @@ import type { Engine } from '../../engine.ts';
 import { consult } from './consult.ts';
 import { noteReadings } from './notes.ts';
 import { createPictureMaker } from './picture/index.ts';
+import { replacement } from './proposals/helper.ts';
 import { proposals } from './proposals/index.ts';
 import type { DeskAnswer, DeskRequest } from './types.ts';
 
@@ -19,6 +20,8 @@ export function createDesk(room: { readonly engine: Engine; readonly loadFile: (
         return consult(request, room.engine);
       case 'proposals':
         return { proposals: proposals(request) };
+      case 'replacement':
+        return { proposals: [replacement(request)] };
       case 'picture':
         return pictures.picture(request);
       case 'notes':

@@ -57,7 +57,7 @@ export interface ConsultAnswer {
 export interface TextEdit extends Place {
   readonly text: string;
 }
-export type ProposalKind = 'after' | 'row' | 'replace' | 'polynomial' | 'comment';
+export type ProposalKind = 'after' | 'row' | 'replace' | 'polynomial' | 'comment' | 'helper';
 /** One way to put a result into the document. Titles are the editor's; `preview` is one line of Unicode. */
 export interface Proposal {
   readonly kind: ProposalKind;
@@ -75,6 +75,18 @@ export interface ProposalsRequest {
 }
 export interface ProposalsAnswer {
   readonly proposals: readonly Proposal[];
+}
+
+/** Code that was written for the user, put into the user's file in place of the expression. */
+export interface ReplacementRequest {
+  readonly desk: 'replacement';
+  readonly text: string;
+  readonly language: string;
+  readonly place: Place;
+  readonly code: string;
+  readonly imports: readonly string[];
+  /** What the new function is called with. */
+  readonly argument: string;
 }
 
 /** A formula as a picture that a Markdown image can show. `ink` is a CSS colour. */
@@ -112,10 +124,10 @@ export interface NotesAnswer {
   readonly notes: readonly NoteReading[];
 }
 
-export type DeskRequest = ConsultRequest | ProposalsRequest | PictureRequest | NotesRequest;
+export type DeskRequest = ConsultRequest | ProposalsRequest | ReplacementRequest | PictureRequest | NotesRequest;
 export type DeskAnswerTo<R extends DeskRequest> = R extends ConsultRequest
   ? ConsultAnswer
-  : R extends ProposalsRequest
+  : R extends ProposalsRequest | ReplacementRequest
     ? ProposalsAnswer
     : R extends PictureRequest
       ? PictureAnswer

@@ -2,6 +2,7 @@
 import type { ExpandAnswer } from '../../../protocol.ts';
 import type { OrderStyle, Place, Proposal, ProposalsRequest } from '../types.ts';
 import { displayAround } from './display.ts';
+import { importEdits } from './imports.ts';
 
 const COMMENTS: Readonly<Record<string, string>> = { python: '# ', julia: '# ', r: '# ', fortran: '! ', matlab: '% ' };
 
@@ -50,9 +51,9 @@ function inCode(text: string, place: Place, answer: ExpandAnswer, code: string, 
   const indent = /^[ \t]*/.exec(text.slice(lineStart))?.[0] ?? '';
   const newline = text.includes('\r\n') ? '\r\n' : '\n';
   const comment = `${indent}${COMMENTS[language] ?? '// '}${text.slice(place.start, place.end).replace(/\s+/g, ' ')} = ${answer.text}${newline}`;
-  const imports = missingImports(text, answer.insertion?.code?.imports ?? []);
+  const imports = importEdits(text, answer.insertion?.code?.imports ?? []);
   return [
-    { kind: 'polynomial', preview: code, edits: [...imports.map((line) => ({ start: 0, end: 0, text: `${line}${newline}` })), { start: place.start, end: place.end, text: needsBrackets ? `(${code})` : code }] },
+    { kind: 'polynomial', preview: code, edits: [...imports, { start: place.start, end: place.end, text: needsBrackets ? `(${code})` : code }] },
     { kind: 'comment', preview: answer.text, edits: [{ start: lineStart, end: lineStart, text: comment }] },
   ];
 }
@@ -63,5 +64,3 @@ function standsInProduct(text: string, { start, end }: Place): boolean {
   const after = /^\s*(\S)/.exec(text.slice(end, end + 40))?.[1] ?? '';
   return '*/-^%.'.includes(before || ' ') || '*/^%.'.includes(after || ' ');
 }
-
-const missingImports = (text: string, imports: readonly string[]): readonly string[] => imports.filter((line) => !text.includes(line));

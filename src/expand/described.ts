@@ -1,9 +1,9 @@
 /** A function by its description: local form at singular places and infinity, differential equation or derivative at regular points. */
 import type { Element } from '../algebra/types.ts';
-import { build, type Expression, Q, type Rational } from '../expression/index.ts';
-import type { FormalSeries, FunctionDescription, LocalForm, Place } from '../functions/index.ts';
+import { build, type CallNode, type Expression, Q, type Rational } from '../expression/index.ts';
+import { acceptsArity, describe, type FormalSeries, type FunctionDescription, type LocalForm, type Place } from '../functions/index.ts';
 import { Declined } from '../outcome.ts';
-import { add, alongDerivative, beyondAllOrders, compose, type Context, eventualSign, exactOf, finiteStream, growth, isRational, leading, monomial, type Multi, multiply, plainText, Series, signOfExponent, split, withExact } from '../series/index.ts';
+import { add, alongDerivative, beyondAllOrders, compose, type Context, eventualSign, exactOf, finiteStream, growth, isRational, leading, monomial, type Multi, multiply, plainText, scaleBy, Series, signOfExponent, split, withExact } from '../series/index.ts';
 import type { Evaluate } from './calls.ts';
 import { bind, freshSymbol, type Session } from './session.ts';
 import { aroundSlowPart } from './slow-part.ts';
@@ -67,7 +67,11 @@ function inOneArgument(s: Session, d: FunctionDescription, args: readonly Multi[
     }
     throw new Declined('no-expansion', `${title(d)} has no known expansion for a large argument; choose a finite point.`);
   }
-  if (!small || (small instanceof Series && leading(c, small) === null)) return c.field.call(d.id, args.map((a, k) => (k === index ? constant : (a as Element))));
+  if (!small || (small instanceof Series && leading(c, small) === null)) {
+    const constants = args.map((a, k) => (k === index ? constant : (a as Element)));
+    refusePole(s, d, constants, evaluate);
+    return c.field.call(d.id, constants);
+  }
   const offset = freshSymbol(s, 'u');
   const sign = eventualSign(c, small);
   const place: Place = {
@@ -99,6 +103,12 @@ function fasterPart(f: Series, large: Multi): boolean {
   return !(large instanceof Series) || f.element.rank > large.element.rank;
 }
 
+/** The same for a call that stands as a constant in the formula. */
+export function refusePoleOf(s: Session, e: CallNode, evaluate: Evaluate): void {
+  const d = describe(e.function);
+  if (d?.local && acceptsArity(d, e.args.length)) refusePole(s, d, e.args.map((a) => s.context.field.fromExpression(a)), evaluate);
+}
+
 /** A value at a rational constant where the function's local form is unbounded: there is none. */
 export function refusePole(s: Session, d: FunctionDescription, args: readonly Element[], evaluate: Evaluate): void {
   const c = s.context;
@@ -107,18 +117,21 @@ export function refusePole(s: Session, d: FunctionDescription, args: readonly El
   if (!d.local || at === undefined || !isRational(at)) return;
   const trees = args.map((a) => exactOf(c, a));
   if (d.value?.(trees)) return;
-  const offset = freshSymbol(s, 'u');
-  const z = freshSymbol(s, 'z');
-  const form = d.local(trees.map((t, k) => (k === index ? build.symbol(z) : t)), index, { kind: 'finite', center: build.number(at), offset: build.symbol(offset), side: 'right' });
-  if (!form) return;
-  const u = monomial(c, c.scale.local, Q.ONE);
-  const notes = { ...c.notes };
-  const value = evaluateForm(bind(s, [[offset, u], [z, add(c, at, u)]]), form, evaluate);
-  Object.assign(c.notes, { sided: notes.sided, divergent: notes.divergent });
-  const first = value instanceof Series ? value.stream.at(0) : null;
-  if (!first || !(value instanceof Series)) return;
-  const singular = signOfExponent(c, first.exponent) < 0 || (signOfExponent(c, first.exponent) === 0 && first.coefficient instanceof Series && growth(c, first.coefficient) === 'large');
-  if (singular && growth(c, value) === 'large') throw new Declined('no-expansion', `${title(d)} has no finite value at ${plainText(build.number(at))}; correct the formula.`);
+  for (const side of ['right', 'left'] as const) {
+    const offset = freshSymbol(s, 'u');
+    const z = freshSymbol(s, 'z');
+    const form = d.local(trees.map((t, k) => (k === index ? build.symbol(z) : t)), index, { kind: 'finite', center: build.number(at), offset: build.symbol(offset), side });
+    if (!form) continue;
+    const u = scaleBy(c, monomial(c, c.scale.local, Q.ONE), Q.rational(side === 'right' ? 1 : -1));
+    const notes = { ...c.notes };
+    const value = evaluateForm(bind(s, [[offset, u], [z, add(c, at, u)]]), form, evaluate);
+    Object.assign(c.notes, { sided: notes.sided, divergent: notes.divergent });
+    const first = value instanceof Series ? value.stream.at(0) : null;
+    if (!first || !(value instanceof Series)) continue;
+    const order = signOfExponent(c, first.exponent);
+    const singular = order < 0 || (order === 0 && first.coefficient instanceof Series && growth(c, first.coefficient) === 'large');
+    if (singular && growth(c, value) === 'large') throw new Declined('no-expansion', `${title(d)} has no finite value at ${plainText(build.number(at))}; correct the formula.`);
+  }
 }
 
 /** Evaluates a local form: its formal series become series of their arguments, then its body. */

@@ -1,5 +1,5 @@
 /** From a tree to the multiseries it stands for. */
-import { children, type Expression, Q } from '../expression/index.ts';
+import { children, type Expression, Q, walk } from '../expression/index.ts';
 import { Declined } from '../outcome.ts';
 import {
   add, divide, eventualSign, exactOf, exponential, generalPower, isLiteralOne, isLiteralZero, isRational, isKnownZero, isRealMulti, monomialOf, multiply, negate, type Multi, orderSeries, power,
@@ -7,6 +7,7 @@ import {
 } from '../series/index.ts';
 import { evaluateApply } from './apply.ts';
 import { evaluateCall } from './calls.ts';
+import { refusePoleOf } from './described.ts';
 import { evaluateIndexed } from './sums/evaluate-sum.ts';
 import { evaluateIntegral } from './integrals/integral.ts';
 import type { Session } from './session.ts';
@@ -40,6 +41,7 @@ export function varies(s: Session, e: Expression): boolean {
 function constantOf(s: Session, e: Expression): Multi {
   if (e.kind === 'number') return e.value;
   if (e.kind === 'constant' && e.name === 'infinity') throw new Declined('bad-request', 'Infinity is not a number to calculate with; use it as the point or as a limit.');
+  for (const node of walk(e)) if (node.kind === 'call') refusePoleOf(s, node, evaluate);
   return s.context.field.fromExpression(e);
 }
 

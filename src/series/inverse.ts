@@ -3,7 +3,7 @@ import type { Element } from '../algebra/types.ts';
 import { build, Q } from '../expression/index.ts';
 import { Declined } from '../outcome.ts';
 import { alongDerivative } from './analytic.ts';
-import { logarithm, pi, power, reciprocal, withExact } from './exponential.ts';
+import { isRealMulti, logarithm, pi, power, reciprocal, withExact } from './exponential.ts';
 import { decideSign, eventualSign, isZero } from './leading.ts';
 import { type Context, exactOf, isRational, type Multi, multiplyElements, Series } from './multi.ts';
 import { add, multiply, negate, scaleBy, subtract } from './ring.ts';
@@ -30,11 +30,16 @@ function asin(c: Context, f: Series): Multi {
   if (!large) {
     if (equals(c, constant, Q.ONE)) return subtract(c, halfPi(c), acosNearOne(c, f));
     if (equals(c, constant, Q.MINUS_ONE)) return subtract(c, acosNearOne(c, negate(c, f)), halfPi(c));
-    return alongDerivative(c, f, (at) => c.field.call('asin', [at]), (g) => reciprocal(c, root(c, subtract(c, Q.ONE, multiply(c, g, g)))));
+    if (!approachesCut(c, f, constant, (square) => decideSign(c, c.field.subtract(square, Q.ONE)) === 1)) return alongDerivative(c, f, (at) => c.field.call('asin', [at]), (g) => reciprocal(c, root(c, subtract(c, Q.ONE, multiply(c, g, g)))));
   }
   // asin z = -i log(i z + sqrt(1 - z^2))
   const i = c.field.i;
   return scaleBy(c, logarithm(c, add(c, scaleBy(c, f, i), root(c, subtract(c, Q.ONE, multiply(c, f, f))))), c.field.negate(i));
+}
+
+/** Whether f is complex while its limit lies on the real cut: the side of the cut then decides, which the logarithms find out. */
+function approachesCut(c: Context, f: Series, limit: Element, onCut: (square: Element) => boolean): boolean {
+  return isReal(c, limit) && !isRealMulti(c, f) && onCut(c.field.multiply(limit, limit));
 }
 
 function acos(c: Context, f: Series): Multi {
@@ -83,7 +88,7 @@ function acosh(c: Context, f: Series): Multi {
   if (large) return logarithm(c, add(c, f, multiply(c, root(c, plus(c, f, Q.ONE)), root(c, plus(c, f, Q.MINUS_ONE)))));
   if (equals(c, constant, Q.ONE)) return scaleBy(c, inverse(c, 'asinh', root(c, scaleBy(c, plus(c, f, Q.MINUS_ONE), Q.HALF))), Q.rational(2));
   if (isReal(c, constant)) {
-    if (equals(c, constant, Q.MINUS_ONE)) return logarithm(c, add(c, f, multiply(c, root(c, plus(c, f, Q.ONE)), root(c, plus(c, f, Q.MINUS_ONE)))));
+    if (equals(c, constant, Q.MINUS_ONE) || (!isRealMulti(c, f) && decideSign(c, c.field.subtract(constant, Q.ONE)) === -1)) return logarithm(c, add(c, f, multiply(c, root(c, plus(c, f, Q.ONE)), root(c, plus(c, f, Q.MINUS_ONE)))));
     if (decideSign(c, c.field.subtract(c.field.multiply(constant, constant), Q.ONE)) === -1) return scaleBy(c, acos(c, f), c.field.i);
   }
   return alongDerivative(c, f, (at) => c.field.call('acosh', [at]), (g) => reciprocal(c, multiply(c, root(c, plus(c, g, Q.MINUS_ONE)), root(c, plus(c, g, Q.ONE)))));

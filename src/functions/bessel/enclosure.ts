@@ -305,7 +305,29 @@ const ordered = (f: WithOrder): Algorithm => ({
     return f(kit, exact && isRational(exact) ? exact : { set: nu }, z);
   },
 });
-const kelvinAlgorithm = (kind: 'Ber' | 'Bei' | 'Ker' | 'Kei'): Algorithm => ({ real: (kit, [nu, x]) => (nu && x ? kelvin(kit, nu, x, kind) : null) });
+/** Off the real axis through both conjugate directions: ber = (J(z w) + J(z w*))/2, w = e^(3 pi i/4), and so on; integer orders of ber and bei are entire. */
+function kelvinComplex(kit: Kit<ComplexBall>, nu: ComplexBall, z: ComplexBall, kind: 'Ber' | 'Bei' | 'Ker' | 'Kei'): ComplexBall | null {
+  const exact = nu.im.mid === 0n && nu.im.rad === 0n ? parameterOf(nu.re) : null;
+  const s = real.sqrt(real.scaleByPowerOfTwo(real.ONE, -1), kit.precision);
+  if (exact === null || !isRational(exact) || s === null || bound.exponent(kit.size(z)) > 12) return null;
+  const { a } = kit;
+  const first = kind === 'Ber' || kind === 'Bei';
+  const direction: ComplexBall = { re: first ? real.negate(s) : s, im: s };
+  const value = (w: ComplexBall, turn: 1 | -1): ComplexBall | null => {
+    const raw = first ? firstKind(kit, exact, a.multiply(z, w), -1) : secondKind(kit, exact, a.multiply(z, w), 'K');
+    if (raw === null || first) return raw;
+    const angle = real.multiply(nu.re, real.scaleByPowerOfTwo(real.pi(kit.precision), -1), kit.precision);
+    return a.multiply(raw, { re: real.cos(angle, kit.precision), im: turn === 1 ? real.negate(real.sin(angle, kit.precision)) : real.sin(angle, kit.precision) });
+  };
+  const [up, down] = [value(direction, 1), value(complex.conjugate(direction), -1)];
+  if (up === null || down === null) return null;
+  if (kind === 'Ber' || kind === 'Ker') return a.divideInteger(a.add(up, down), 2);
+  return a.divide(a.subtract(up, down), { re: real.ZERO, im: real.fromInteger(2) });
+}
+const kelvinAlgorithm = (kind: 'Ber' | 'Bei' | 'Ker' | 'Kei'): Algorithm => ({
+  real: (kit, [nu, x]) => (nu && x ? kelvin(kit, nu, x, kind) : null),
+  complex: (kit, [nu, z]) => (nu && z ? kelvinComplex(kit, nu, z, kind) : null),
+});
 
 export const besselAlgorithms: Readonly<Record<string, Algorithm>> = {
   besselJ: ordered(besselJ),

@@ -75,6 +75,8 @@ function rising<T>(kit: Kit<T>, z: T, r: number): T {
 export function logGamma<T>(kit: Kit<T>, z: T): T | null {
   const { a } = kit;
   if (kit.isReal && !real.isPositive(kit.realPart(z))) return null;
+  const n = kit.isReal ? exactInteger(kit.realPart(z), 2000) : null;
+  if (n !== null) return a.log(a.fromInteger(factorial(n - 1)));
   const r = shiftFor(kit, z);
   if (r === null) return null;
   const far = stirling(kit, a.add(z, a.fromInteger(r)));
@@ -188,42 +190,46 @@ function lowerGamma<T>(kit: Kit<T>, s: Parameter<T>, x: T): T | null {
   return scaled ?? null;
 }
 
-/** Gamma(a,x), a and x real, x > 0: the asymptotic series with DLMF 8.11(i) where it is good enough, else Gamma(a) - gamma(a,x); a <= 0 by upward recurrence to a > 0, integers through E_1. */
-function upperGammaReal(kit: Kit<Ball>, s: Ball, x: Ball): Ball | null {
+/** Gamma(a,x): on x > 0 the asymptotic series with DLMF 8.11(i) where it is good enough; else Gamma(a) - gamma(a,x), non-positive integers a through E_1, other a with Re a <= 0 by upward recurrence. */
+export function upperGamma<T>(kit: Kit<T>, s: Parameter<T>, x: T): T | null {
   const { a } = kit;
-  if (!real.isPositive(x)) return null;
-  const parameter = parameterOf(s);
+  const set = toSet(kit, s);
+  if (kit.isReal && !real.isPositive(kit.realPart(x))) return null;
+  const logarithm = isRational(s) ? a.one : a.log(x);
   const inverse = a.divide(a.one, x);
-  if (inverse === null) return null;
-  const least = Math.max(1, Math.ceil(real.toDouble(real.upperEnd(s))));
-  const step = (term: Ball, k: number): Ball => a.multiply(a.multiply(term, inverse), a.subtract(s, a.fromInteger(k + 1)));
-  const far = least < 10_000 ? asymptoticSum(kit, a.one, step, least) : null;
-  const power = isRational(parameter) ? a.powerRational(x, Q.subtract(parameter, Q.ONE)) : a.power(x, a.subtract(s, a.one));
+  const power = isRational(s) ? a.powerRational(x, Q.subtract(s, Q.ONE)) : logarithm === null ? null : a.exp(a.multiply(a.subtract(set, a.one), logarithm));
   const decay = a.exp(a.negate(x));
-  if (power === null || decay === null) return null;
-  if (far !== null) return a.multiply(a.multiply(power, decay), far);
-  if (real.isPositive(s)) {
-    const whole = gamma(kit, s);
-    const lower = lowerGamma(kit, parameter, x);
-    return whole && lower && a.subtract(whole, lower);
+  if (power === null || decay === null || inverse === null) return null;
+  const low = real.toDouble(kit.realPart(set));
+  if (kit.isReal) {
+    const least = Math.max(1, Math.ceil(real.toDouble(real.upperEnd(kit.realPart(set)))));
+    const step = (term: T, k: number): T => a.multiply(a.multiply(term, inverse), a.subtract(set, a.fromInteger(k + 1)));
+    const far = least < 10_000 ? asymptoticSum(kit, a.one, step, least) : null;
+    if (far !== null) return a.multiply(a.multiply(power, decay), far);
   }
-  const n = exactInteger(s, 2000);
-  if (n !== null) return integerUpperGamma(kit, -n, x);
-  if (real.containsZero(s) || real.toDouble(s) < -500) return null;
-  // Gamma(a,x) = (Gamma(a+1,x) - x^a e^-x)/a.
-  const above = upperGammaReal(kit, a.add(s, a.one), x);
-  return above && a.divide(a.subtract(above, a.multiply(a.multiply(power, x), decay)), s);
+  if (bound.exponent(kit.size(x)) > 15) return null;
+  if (real.isPositive(kit.realPart(set))) {
+    const whole = gamma(kit, set);
+    const lower = lowerGamma(kit, s, x);
+    return whole === null || lower === null ? null : a.subtract(whole, lower);
+  }
+  const n = isRational(s) && s.den === 1n ? Number(s.num) : null;
+  if (n !== null && n >= -2000) return integerUpperGamma(kit, -n, x);
+  if (a.containsZero(set) || low < -500) return null;
+  // Gamma(a,x) = (Gamma(a+1,x) - x^a e^-x)/a (DLMF 8.8.2).
+  const above = upperGamma(kit, isRational(s) ? Q.add(s, Q.ONE) : { set: a.add(set, a.one) }, x);
+  return above === null ? null : a.divide(a.subtract(above, a.multiply(a.multiply(power, x), decay)), set);
 }
 /** Gamma(-m, x), m >= 0, from Gamma(0, x) = E_1(x). */
-function integerUpperGamma(kit: Kit<Ball>, m: number, x: Ball): Ball | null {
+function integerUpperGamma<T>(kit: Kit<T>, m: number, x: T): T | null {
   const { a } = kit;
   const logarithm = a.log(x);
   // E_1(x) = -gamma - log x + x 2F2(1,1;2,2;-x) (DLMF 6.6.2).
   const sum = hypergeometricSum(kit, [Q.ONE, Q.ONE], [Q.rational(2), Q.rational(2)], a.negate(x));
   if (logarithm === null || sum === null) return null;
-  let value = a.subtract(a.multiply(x, sum), a.add(real.eulerGamma(kit.precision), logarithm));
+  let value: T = a.subtract(a.multiply(x, sum), a.add(kit.fromReal(real.eulerGamma(kit.precision)), logarithm));
   const decay = a.exp(a.negate(x));
-  let power = a.one;
+  let power: T = a.one;
   if (decay === null) return null;
   for (let j = 1; j <= m; j++) {
     const next = a.divide(power, x);
@@ -234,10 +240,15 @@ function integerUpperGamma(kit: Kit<Ball>, m: number, x: Ball): Ball | null {
   return value;
 }
 
-const real2 =
-  (f: (kit: Kit<Ball>, s: Ball, x: Ball) => Ball | null): Algorithm['real'] =>
-  (kit, [s, x]) =>
-    s && x ? f(kit, s, x) : null;
+/** The algorithm of f(s, x) on both kinds of sets; a real exact s stays a rational. */
+const withParameter = (f: <T>(kit: Kit<T>, s: Parameter<T>, x: T) => T | null): Algorithm => ({
+  real: (kit, [s, x]) => (s && x ? f(kit, parameterOf(s), x) : null),
+  complex: (kit, [s, x]) => {
+    if (!s || !x) return null;
+    const exact = s.im.mid === 0n && s.im.rad === 0n ? parameterOf(s.re) : null;
+    return f(kit, exact && isRational(exact) ? exact : { set: s }, x);
+  },
+});
 const one =
   (f: <T>(kit: Kit<T>, z: T) => T | null) =>
   <T>(kit: Kit<T>, [z]: readonly T[]): T | null =>
@@ -258,12 +269,9 @@ export const gammaAlgorithms: Readonly<Record<string, Algorithm>> = {
       return z && order !== null ? polygamma(kit, order, z) : null;
     },
   },
-  upperGamma: { real: real2(upperGammaReal) },
-  lowerGamma: {
-    real: real2((kit, s, x) => {
-      if (!real.isPositive(s) || !real.isNonNegative(x)) return null;
-      if (kit.a.isZero(x)) return kit.a.zero;
-      return lowerGamma(kit, parameterOf(s), x);
-    }),
-  },
+  upperGamma: withParameter(upperGamma),
+  lowerGamma: withParameter((kit, s, x) => {
+    if (kit.isReal && (!real.isPositive(kit.realPart(toSet(kit, s))) || !real.isNonNegative(kit.realPart(x)))) return null;
+    return kit.a.isZero(x) ? kit.a.zero : lowerGamma(kit, s, x);
+  }),
 };

@@ -2,9 +2,10 @@
 import { Q } from '../../expression/index.ts';
 import { type Ball, real } from '../../rigorous/index.ts';
 import { inverseOfIncreasing } from '../enclosure/inverse.ts';
-import { bound, exactInteger, type Kit, toSet, parameterOf, isRational } from '../enclosure/kit.ts';
+import { bound, isRational, type Kit, type Parameter, parameterOf, toSet } from '../enclosure/kit.ts';
 import { asymptoticSum, hypergeometricSum } from '../enclosure/series.ts';
-import { type Algorithm, directly } from '../enclosure/wrap.ts';
+import type { Algorithm } from '../enclosure/wrap.ts';
+import { upperGamma } from '../gamma/enclosure.ts';
 
 const q = Q.rational;
 /** Series of growing terms need about e |z| of them; beyond this they are left alone. */
@@ -216,21 +217,20 @@ function chi<T>(kit: Kit<T>, z: T): T | null {
 }
 
 /** E_p(x) = x^(p-1) Gamma(1-p, x) (DLMF 8.19.1), and its asymptotic series for p > 0 (8.20(i)). */
-function expIntegral(kit: Kit<Ball>, p: Ball, x: Ball): Ball | null {
+function expIntegral<T>(kit: Kit<T>, p: Parameter<T>, x: T): T | null {
   const { a } = kit;
-  if (!real.isPositive(x)) {
-    const n = exactInteger(p, 1000);
-    return a.isZero(x) && n !== null && n > 1 ? a.fromRational(q(1, n - 1)) : null;
-  }
+  const n = isRational(p) && p.den === 1n ? Number(p.num) : null;
+  if (kit.isReal && !real.isPositive(kit.realPart(x))) return a.isZero(x) && n !== null && n > 1 ? a.fromRational(q(1, n - 1)) : null;
+  if (n === 1) return e1(kit, x);
+  const set = toSet(kit, p);
   const inverse = a.divide(a.one, x);
-  if (inverse !== null && real.isPositive(p)) {
-    const sum = asymptoticSum(kit, inverse, (term, k) => a.negate(a.multiply(a.multiply(term, inverse), a.add(p, a.fromInteger(k)))), 1);
+  if (kit.isReal && inverse !== null && real.isPositive(kit.realPart(set))) {
+    const sum = asymptoticSum(kit, inverse, (term, k) => a.negate(a.multiply(a.multiply(term, inverse), a.add(set, a.fromInteger(k)))), 1);
     const decay = a.exp(a.negate(x));
     if (sum !== null && decay !== null) return a.multiply(sum, decay);
   }
-  const upper = directly(kit, 'upperGamma', [a.subtract(a.one, p), x]);
-  const parameter = parameterOf(p);
-  const power = isRational(parameter) ? a.powerRational(x, Q.subtract(parameter, Q.ONE)) : a.power(x, a.subtract(toSet(kit, parameter), a.one));
+  const upper = upperGamma(kit, isRational(p) ? Q.subtract(Q.ONE, p) : { set: a.subtract(a.one, set) }, x);
+  const power = isRational(p) ? a.powerRational(x, Q.subtract(p, Q.ONE)) : a.power(x, a.subtract(set, a.one));
   return upper === null || power === null ? null : a.multiply(power, upper);
 }
 
@@ -262,8 +262,12 @@ export const integralAlgorithms: Readonly<Record<string, Algorithm>> = {
   fresnelC: one((kit, z) => fresnel(kit, z, 0)),
   expIntegralEi: one(ei),
   expIntegralE: {
-    real: (kit, [p, x]) => (p && x ? expIntegral(kit, p, x) : null),
-    complex: (kit, [p, z]) => (p && z && kit.a.isPoint(p) && kit.a.isZero({ re: p.im, im: p.im }) && exactInteger(p.re) === 1 ? e1(kit, z) : null),
+    real: (kit, [p, x]) => (p && x ? expIntegral(kit, parameterOf(p), x) : null),
+    complex: (kit, [p, z]) => {
+      if (!p || !z) return null;
+      const exact = p.im.mid === 0n && p.im.rad === 0n ? parameterOf(p.re) : null;
+      return expIntegral(kit, exact && isRational(exact) ? exact : { set: p }, z);
+    },
   },
   ein: one(ein),
   cin: one(cin),

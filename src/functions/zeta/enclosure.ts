@@ -8,7 +8,7 @@ import { type Ball, type ComplexBall, complex, real } from '../../rigorous/index
 import { bound, complexKit, exactInteger, type Kit, realKit } from '../enclosure/kit.ts';
 import { geometricTail } from '../enclosure/series.ts';
 import type { Algorithm } from '../enclosure/wrap.ts';
-import { gamma, logGamma } from '../gamma/enclosure.ts';
+import { gamma, logGamma, reciprocalGamma } from '../gamma/enclosure.ts';
 import { bernoulli, binomial, eulerNumber, factorial } from '../sequences.ts';
 
 /** Truncated power series in the shift of s: coefficients 0..n. */
@@ -196,33 +196,34 @@ function stieltjes(kit: Kit<Ball>, n: number): Ball | null {
 }
 
 /** log G(x) = (x-1) log Gamma(x) - zeta'(-1,x) + zeta'(-1) (Vardi 1988; follows from DLMF 5.17.4 and 25.11). */
-function logBarnesG(kit: Kit<Ball>, x: Ball): Ball | null {
+function logBarnesG<T>(kit: Kit<T>, x: T): T | null {
   const { a } = kit;
-  if (!real.isPositive(x)) return null;
-  const n = exactInteger(x, 400);
-  if (n !== null) return logSuperfactorial(kit, n);
+  if (kit.isReal && !real.isPositive(kit.realPart(x))) return null;
+  const n = kit.isReal ? exactInteger(kit.realPart(x), 400) : null;
+  if (n !== null) return a.log(a.fromInteger(superfactorial(n)));
   const logarithm = logGamma(kit, x);
   const own = zetaDerivative(kit, 1, a.fromInteger(-1), x);
   const one = zetaDerivative(kit, 1, a.fromInteger(-1), a.one);
   if (logarithm === null || own === null || one === null) return null;
   return a.add(a.subtract(a.multiply(a.subtract(x, a.one), logarithm), own), one);
 }
-/** log G(n) of the product of the factorials below n - 1. */
-function logSuperfactorial(kit: Kit<Ball>, n: number): Ball | null {
+/** G(n), the product of the factorials below n - 1. */
+function superfactorial(n: number): bigint {
   let product = 1n;
   for (let j = 2; j < n - 1; j++) product *= factorial(j);
-  return kit.a.log(kit.a.fromInteger(product));
+  return product;
 }
-function barnesG(kit: Kit<Ball>, x: Ball): Ball | null {
+/** Entire: downward by G(x) = G(x+1)/Gamma(x). */
+function barnesG<T>(kit: Kit<T>, x: T): T | null {
   const { a } = kit;
-  if (real.isPositive(x)) {
+  if (real.isPositive(kit.realPart(x))) {
     const value = logBarnesG(kit, x);
-    return value && a.exp(value);
+    return value === null ? null : a.exp(value);
   }
-  if (real.toDouble(x) < -60) return null;
+  if (real.toDouble(kit.realPart(x)) < -60) return null;
   const above = barnesG(kit, a.add(x, a.one));
-  const g = gamma(kit, x);
-  return above && g && a.divide(above, g);
+  const inverse = reciprocalGamma(kit, x);
+  return above === null || inverse === null ? null : a.multiply(above, inverse);
 }
 
 /** Li_s(x). Direct sum for |x| <= 3/4, in powers of log x for |log x| < 6, inversion beyond. */
@@ -530,7 +531,17 @@ export const zetaAlgorithms: Readonly<Record<string, Algorithm>> = {
   },
   polylog: { real: (kit, [s, x]) => (s && x ? polylog(kit, s, x) : null), complex: (kit, [s, x]) => (s && x ? polylog(kit, s, x) : null) },
   clausen: { real: (kit, [t]) => (t ? clausen(kit, t) : null) },
-  inverseTangentIntegral: { real: (kit, [x]) => (x ? inverseTangentIntegral(kit, x) : null) },
+  inverseTangentIntegral: {
+    real: (kit, [x]) => (x ? inverseTangentIntegral(kit, x) : null),
+    // (Li_2(iz) - Li_2(-iz))/(2i), analytic off the imaginary axis beyond i and -i.
+    complex: (kit, [z]) => {
+      if (!z) return null;
+      const two = complex.fromInteger(2);
+      const turned: ComplexBall = { re: real.negate(z.im), im: z.re };
+      const [up, down] = [polylog(kit, two, turned), polylog(kit, two, complex.negate(turned))];
+      return up && down && kit.a.divide(kit.a.subtract(up, down), { re: real.ZERO, im: two.re });
+    },
+  },
   debye: {
     real: (kit, [n, x]) => {
       const order = integer(n);
@@ -567,6 +578,6 @@ export const numberAlgorithms: Readonly<Record<string, Algorithm>> = {
   },
 };
 export const barnesAlgorithms: Readonly<Record<string, Algorithm>> = {
-  logBarnesG: { real: (kit, [x]) => (x ? logBarnesG(kit, x) : null) },
-  barnesG: { real: (kit, [x]) => (x ? barnesG(kit, x) : null) },
+  logBarnesG: { real: (kit, [x]) => (x ? logBarnesG(kit, x) : null), complex: (kit, [x]) => (x ? logBarnesG(kit, x) : null) },
+  barnesG: { real: (kit, [x]) => (x ? barnesG(kit, x) : null), complex: (kit, [x]) => (x ? barnesG(kit, x) : null) },
 };

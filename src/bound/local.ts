@@ -6,6 +6,7 @@ import { Declined } from '../outcome.ts';
 import { type LogModel, logModelOfTree, type Model, type ModelArithmetic, modelArithmetic, rationalOf } from '../rigorous/index.ts';
 import type { Numbers } from './numbers.ts';
 import { isExactlyZero, type Segment } from './region.ts';
+import { besselSeriesModel } from './besselAtZero.ts';
 import { envelopeModel } from './enveloping.ts';
 import { rewriteCall } from './rewrite.ts';
 import { specialModel } from './special.ts';
@@ -41,7 +42,7 @@ export function modelOf<T>(e: Expression, n: Numbers<T>, m: ModelArithmetic<T>, 
 export function logModelOf<T>(e: Expression, n: Numbers<T>, m: ModelArithmetic<T>, variable: string, leaf: Model<T>, vanishes?: (e: Expression) => boolean, check?: () => void): LogModel<T> | null {
   const environment = new Map([...parameterModels(n, m), [variable, leaf] as const]);
   if (environment.size > PARAMETER_LIMIT) return null;
-  return logModelOfTree(e, { m, trees: n.trees, real: n.r, describe, environment, vanishes, check, call: (id, args, models, isConstant) => envelopeModel(id, args, models, n, m) ?? specialModel(id, args, models, n, m, isConstant), rewrite: (id, args, models) => rewriteCall(id, args, models, n, m) });
+  return logModelOfTree(e, { m, trees: n.trees, real: n.r, describe, environment, vanishes, check, call: (id, args, models, isConstant) => envelopeModel(id, args, models, n, m) ?? besselSeriesModel(id, args, models, n, m) ?? specialModel(id, args, models, n, m, isConstant), rewrite: (id, args, models) => rewriteCall(id, args, models, n, m) });
 }
 
 /** The least q that makes every power of the expansion a whole multiple of 1/q; null where a power is not a rational number. */

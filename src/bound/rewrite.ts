@@ -1,6 +1,7 @@
 /** Exact identities that bring a special function to a place where it can be modelled: away from poles, its logarithm in the open, or its asymptotic series with a proven remainder. */
 import { build, type Expression, Q } from '../expression/index.ts';
 import type { Model, ModelArithmetic } from '../rigorous/index.ts';
+import { besselAtZero } from './besselAtZero.ts';
 import type { Numbers } from './numbers.ts';
 
 const { call, constant, difference, negation, number, power, product, quotient, squareRoot, sum } = build;
@@ -76,6 +77,12 @@ function nearZero(id: string, args: readonly Expression[], x: Expression, sign: 
       // E_k(x) = (e^-x - x E_(k-1)(x))/(k-1) (DLMF 8.19.12).
       return k > 1 && k < 30 ? quotient(difference(exp(negation(x)), product(x, call('expIntegralE', number(k - 1), x))), number(k - 1)) : null;
     }
+    case 'besselJ':
+    case 'besselI':
+      return besselAtZero(id, args, x);
+    case 'besselY':
+    case 'besselK':
+      return sign > 0 ? besselAtZero(id, args, x) : null;
     default:
       return null;
   }

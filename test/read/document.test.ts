@@ -81,6 +81,10 @@ describe('Markdown documents', () => {
   it('hands on fenced code with its language, also Quarto cells, and math fences', () => {
     expect(summary('```c\nsin(x)\n```\n\n```{python}\n#| echo: false\nx\n```\n\n```math\n\\cos x\n```\n', 'quarto')).toEqual(['code c: sin(x)', 'code python: #| echo: false\nx', 'display latex: \\cos x']);
   });
+  it('reads past the marks of a quotation', () => {
+    const text = '> $$\n> \\begin{aligned}\n> f(x) &= \\sin x \\\\\n> &= x + O(x^3) \\\\\n> g &= x\n> \\end{aligned}\n> $$\n';
+    expect(formulas(text, 'markdown')).toEqual(['|@f<0>(x) = sin(x) = (x + O(x^3))', '|g = x']);
+  });
   it('reads display blocks with environments and web delimiters', () => {
     expect(formulas('$$\n\\begin{align}\na &= b \\\\\n&= c\n\\end{align}\n$$\n\n\\\\[ e^x = 1 + x + \\cdots \\\\]\n', 'markdown')).toEqual(['|a = b = c', '|#e^x = (1 + x + ...)']);
   });

@@ -19,8 +19,11 @@ export function formulasOf(text: string, from: number, to: number, environment: 
   const out: { start: number; end: number; label?: string; tag?: string; rows: number }[] = [];
   /** Brackets still open in the last formula. */
   let open = 0;
+  const quoted = /^\s*>/.test(whole);
   for (const row of splitRows(text, from, to)) {
-    const content = text.slice(row.start, row.end);
+    const written = text.slice(row.start, row.end);
+    // In a Markdown quotation the marks at the line starts are no relation signs.
+    const content = quoted ? written.replace(/(^|\n)[ \t]*>[ \t>]*/g, '$1') : written;
     if (content.replace(/%[^\n]*/g, '').trim() === '') continue;
     const [label, tag] = labelsOf(content);
     const last = out[out.length - 1];

@@ -47,6 +47,7 @@ export function lex(text: string, options: LexOptions): Token[] {
   const from = options.from ?? 0;
   const to = options.to ?? text.length;
   const doubled = hasDoubledBackslashes(from === 0 && to === text.length ? text : text.slice(from, to));
+  const quoted = isQuoted(text, from, to);
   /** Nesting of environments whose rows and cells mean something. */
   let tables = 0;
   lexSource({ text, from, to, fixed: null, args: [], depth: 0 });
@@ -135,6 +136,9 @@ export function lex(text: string, options: LexOptions): Token[] {
         i += 1;
       } else if (c === '$' || c === '&') {
         if (c === '&' && tables > 0) push('mark', '&', i, i + 1);
+        i += 1;
+      } else if (c === '>' && quoted && source.fixed === null && startsLine(body, i)) {
+        spaced = true;
         i += 1;
       } else if (c === '~' && body.charAt(i + 1) !== '=' && options.notation === 'latex') {
         spaced = true;
@@ -387,4 +391,19 @@ export function lex(text: string, options: LexOptions): Token[] {
 /** Text copied out of a string literal has every backslash twice: `\\frac{1}{2}`. Row ends (`\\` before anything but a letter) do not count. */
 function hasDoubledBackslashes(text: string): boolean {
   return /\\\\[A-Za-z]/.test(text) && !/(?:^|[^\\])\\[A-Za-z]/.test(text);
+}
+
+/** A formula out of a Markdown quotation: every line of it starts with `>`, which no formula does by itself. */
+function isQuoted(text: string, from: number, to: number): boolean {
+  let start = from;
+  while (start < to && /\s/.test(text.charAt(start))) start += 1;
+  if (text.charAt(start) !== '>') return false;
+  return text.slice(start, to).split('\n').every((line) => /^\s*(?:>|$)/.test(line));
+}
+
+/** Only blanks and quotation marks stand before it on its line. */
+function startsLine(text: string, at: number): boolean {
+  let k = at - 1;
+  while (k >= 0 && (text.charAt(k) === ' ' || text.charAt(k) === '\t' || text.charAt(k) === '>')) k -= 1;
+  return k < 0 || text.charAt(k) === '\n';
 }

@@ -92,6 +92,7 @@ function mainFinding(printed: Claim, given: Expression, asked: Asked, place: Pla
   if (best.judgement.kind === 'undecided') return meant(claim, f, best.choice.setting) ? only(undecided(claim, place, best.judgement.reason)) : null;
   if (best.judgement.kind !== 'fails') return null;
   if (!isHeldAgainst(claim, f, best, tried.length > 1, place)) return meant(claim, f, best.choice.setting) && hasMarks(claim.side) ? only(undecided(claim, place, 'It is not plain in which quantity, and where, this is an expansion; say so with a note such as leading-order: small x.')) : null;
+  if (!best.choice.certain && (mentionsFunction(f) || mentionsFunction(claim.side))) return only(undecided(claim, place, 'In which quantity this is an expansion is not plain; say so with a note such as leading-order: small h.'));
   const unknown = unknownSymbols(f, claim.side, best.choice.setting);
   if (unknown.length > 0) {
     const meaning = withConstants(f, claim, unknown, best.choice.setting);

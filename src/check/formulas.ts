@@ -26,6 +26,11 @@ export function formulasOf(text: string, language: string, options: { readonly f
   const unread: UnreadFormula[] = [];
   const read = (span: Span, notation: 'latex' | 'plain', inline: boolean, label: string | null, quiet: boolean): boolean => {
     const outcome = readFormula(text, notation, { start: span.start, end: span.end, macros: content.macros, joinRows: true });
+    const mixed = outcome.ok ? foreignText(text, span, outcome.value.expression) : null;
+    if (mixed !== null) {
+      if (!quiet) unread.push({ ...span, reason: mixed });
+      return false;
+    }
     if (outcome.ok) {
       found.push({ span, notation, formula: outcome.value, inline, label });
       return true;
@@ -41,6 +46,26 @@ export function formulasOf(text: string, language: string, options: { readonly f
   }
   if (found.length === 0 && unread.length === 0 && content.regions.length === 0 && text.trim() !== '') read({ start: 0, end: text.length }, language === 'plain' && !text.includes('\\') ? 'plain' : 'latex', false, null, false);
   return { found, unread, content };
+}
+
+/** Dollar signs or whole words inside what was taken for one formula: its delimiters are not paired as they look. */
+function foreignText(text: string, span: Span, e: Expression): string | null {
+  if (/(?<!\\)\$/.test(text.slice(span.start, span.end))) return 'The signs that open and close mathematics are not paired here; write each formula between its own.';
+  const words = [...walk(e)].some((n) => n.kind === 'product' && n.factors.length >= 6 && n.span && longestRun(n.factors, text) >= 6);
+  return words ? 'Words of running text stand in this formula; set them in \\text{} or outside.' : null;
+}
+
+/** Longest run of factors that are single letters standing side by side. */
+function longestRun(factors: readonly Expression[], text: string): number {
+  let longest = 0;
+  let run = 0;
+  factors.forEach((factor, i) => {
+    const before = factors[i - 1];
+    const letter = factor.kind === 'symbol' && factor.span !== undefined && /^[A-Za-z]$/.test(text.slice(factor.span.start, factor.span.end));
+    run = letter ? (before?.span && before.span.end === factor.span?.start ? run + 1 : 1) : 0;
+    longest = Math.max(longest, run);
+  });
+  return longest;
 }
 
 interface Place extends Span {

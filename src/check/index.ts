@@ -1,5 +1,5 @@
 /** The door of check/: claims in a document or a single formula, judged. */
-import { build, type Assumption, type Expression, type RelationNode } from '../expression/index.ts';
+import { build, children, walk, type Assumption, type Expression, type RelationNode } from '../expression/index.ts';
 import { attempt, type Budget, Declined, type Outcome } from '../outcome.ts';
 import type { Finding } from '../protocol.ts';
 import { type MacroTable, readExact, readExpression, readNotes, readVariable, settingsAt } from '../read/index.ts';
@@ -83,6 +83,8 @@ function checkClaim(claim: Claim, given: Expression | null, definitions: Definit
   const own = claim.name ?? claim.function;
   if (!own) return [];
   if (isGridName(own)) return findingOf(claim, own, asked, place, { lenient: 'values of a function on a grid' });
+  if (isAnsatz(own, claim.side)) return [];
+  if (speaksOfItself(own, claim.side)) return findingOf(claim, own, asked, place);
   let failed: readonly Finding[] = [];
   for (const value of resolve(definitions, own, place.formula.span.start)) {
     const found = findingOf(claim, value, asked, place);
@@ -96,8 +98,25 @@ function checkClaim(claim: Claim, given: Expression | null, definitions: Definit
     const found = findingOf(claim, quantity.value, { ...asked, variable, point: asked.point ?? build.number(0) }, place, { lenient: quantity.title });
     if (found[0]?.verdict === 'holds') return found;
   }
-  return hasMarks(claim.side) || claim.relation === 'about' ? [unresolved(claim, place)] : [];
+  return hasMarks(claim.side) || (claim.relation === 'about' && isSeriesLike(claim.side)) ? [unresolved(claim, place)] : [];
 }
+
+const baseName = (e: Expression): string | null => (e.kind === 'symbol' || e.kind === 'apply' ? e.name.replace(/'+$/, '').replace(/_.*$/, '') : null);
+
+/** y = y_0 + \epsilon y_1 + ...: names the coefficients of an expansion and claims nothing. */
+function isAnsatz(name: Expression, side: Expression): boolean {
+  const base = baseName(name)?.toLowerCase();
+  return base !== undefined && [...walk(side)].some((n) => (n.kind === 'symbol' || n.kind === 'apply') && /_/.test(n.name) && /\d/.test(n.name) && baseName(n)?.toLowerCase() === base);
+}
+
+/** f'(x) beside f(x + h): an expansion of an unspecified function. */
+function speaksOfItself(name: Expression, side: Expression): boolean {
+  const base = baseName(name);
+  return base !== null && [...walk(side)].some((n) => n.kind === 'apply' && n.name === base && n.args.some((a) => a.kind !== 'symbol' && a.kind !== 'number'));
+}
+
+/** A sum, a common factor looked through. */
+const isSeriesLike = (e: Expression): boolean => e.kind === 'sum' || ((e.kind === 'product' || e.kind === 'negation') && children(e).some(isSeriesLike));
 
 /** Capital letters without a gap (KE) that were read as a product are one name. */
 function wordOf(e: Expression, text: string): string | null {

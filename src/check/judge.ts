@@ -1,5 +1,5 @@
 /** One claim against the truth: the difference of the two sides, its leading term, and what the printed mark allows. */
-import { build, Q, type Expression, type Relation } from '../expression/index.ts';
+import { build, dependsOn, Q, walk, type Expression, type Relation } from '../expression/index.ts';
 import type { Setting } from './context.ts';
 import { absorbDecimals } from './decimals.ts';
 import { compare, compareSizes, leading, type Leading, type Size } from './size.ts';
@@ -43,7 +43,7 @@ export function judge(f: Expression, side: Expression, relation: Relation, setti
   lead = allowed.lead;
   if (lead.kind === 'undecided') return { kind: 'undecided', reason: lead.reason, needsTime: lead.needsTime };
   if (lead.kind === 'zero') return identity(truncated, relation, leftMarked);
-  const verdict = truncated.scale ? againstScale(truncated, truncated.scale, difference, setting) : againstLast(truncated, difference, lead, setting);
+  const verdict = truncated.scale ? againstScale(truncated, truncated.scale, difference, setting) : againstLast(truncated, truth, difference, lead, setting);
   if (verdict.kind === 'holds' && leftMarked) return withLeftMark(leftMarked, truncated, verdict, setting);
   if (verdict.kind === 'fails' && leftMarked && !refutes(leftMarked, lead, setting)) return { kind: 'undecided', reason: 'The left side is itself cut off before the terms that would decide it.', needsTime: false };
   if (verdict.kind === 'holds' && truncated.mark === 'none' && relation === '=') return { ...verdict, hint: { kind: 'approximation' } };
@@ -71,8 +71,8 @@ function againstScale(truncated: Truncated, scale: Expression, difference: Expre
 }
 
 /** Dots, or no mark: the difference must be smaller than the last kept term. */
-function againstLast(truncated: Truncated, difference: Expression, lead: Leading, setting: Setting): Judgement {
-  const reach = lastKept(truncated, setting);
+function againstLast(truncated: Truncated, truth: Expression, difference: Expression, lead: Leading, setting: Setting): Judgement {
+  const reach = isDifferenceFormula(truncated.side, setting) ? ownSize(truth, setting) : lastKept(truncated, setting);
   if (lead.kind === 'monomial' && reach) {
     return compareSizes(lead.size, reach.last) > 0 ? { kind: 'holds', hint: null, truncated } : { kind: 'fails', failure: failureOf(truncated, lead, setting), truncated };
   }
@@ -81,6 +81,14 @@ function againstLast(truncated: Truncated, difference: Expression, lead: Leading
   const size = compare(setting, difference, last.value);
   if (typeof size === 'object') return { kind: 'undecided', reason: size.undecided, needsTime: size.needsTime };
   return size === 'smaller' ? { kind: 'holds', hint: null, truncated } : { kind: 'fails', failure: failureOf(truncated, lead, setting), truncated };
+}
+
+/** Values f(x + h) of an unspecified function: the formula is as good as what remains beside the quantity itself. */
+const isDifferenceFormula = (side: Expression, setting: Setting): boolean => [...walk(side)].some((n) => n.kind === 'apply' && n.args.some((a) => dependsOn(a, setting.variable)));
+
+function ownSize(truth: Expression, setting: Setting): { readonly last: Size } | null {
+  const own = leading(setting, truth);
+  return own.kind === 'monomial' ? { last: own.size } : null;
 }
 
 function failureOf(truncated: Truncated, lead: Leading, setting: Setting): Failed {

@@ -46,6 +46,8 @@ export function settingsFor(f: Expression, side: Expression, asked: Asked, aroun
     if (foundName === named && foundPoint && certain) return [make(named, foundPoint, true)];
     return pointsFor(side, named).map((p, i) => make(named, p, i === 0 && asked.variable !== null));
   }
+  const inOrders = namesInOrders(orders);
+  if (foundName === null && inOrders.length === 1 && inOrders[0] !== undefined) return [make(inOrders[0], asked.point ?? ZERO, true)];
   if (foundName !== null && foundPoint && certain) {
     const point = asked.point ?? foundPoint;
     // 1/x in an O-term does not say at which end of the line.
@@ -53,6 +55,17 @@ export function settingsFor(f: Expression, side: Expression, asked: Asked, aroun
   }
   const names = foundName !== null ? [foundName] : likelyVariables(f, side);
   return names.flatMap((name) => (asked.point ? [make(name, asked.point, true)] : pointsFor(side, name).map((p) => make(name, p, false))));
+}
+
+/** Symbols of O-terms outside the arguments of functions: O(h^2 f'(x)) speaks of h. */
+function namesInOrders(orders: readonly Expression[]): readonly string[] {
+  const names = new Set<string>();
+  const visit = (e: Expression): void => {
+    if (e.kind === 'symbol') names.add(e.name);
+    else if (e.kind !== 'apply' && e.kind !== 'call') for (const child of childrenOf(e)) visit(child);
+  };
+  for (const order of orders) if (order.kind === 'order') visit(order.argument);
+  return [...names];
 }
 
 /** A ratio v/c is small where v is: its first symbol above the bar that both sides show carries it. */

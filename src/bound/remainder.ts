@@ -3,6 +3,7 @@ import { build, type Expression, freeSymbols, Q, type Rational } from '../expres
 import type { Expansion } from '../expand/index.ts';
 import { Declined } from '../outcome.ts';
 import { type Ball, type LogModel, logRange, type Model, real } from '../rigorous/index.ts';
+import { scaleOut } from './homogeneous.ts';
 import { denominatorOf, type Local, localModel, logModelOf, remainderAtPoint, sumOf } from './local.ts';
 import { ballNumbers, doubles, type Numbers, type ParameterBalls } from './numbers.ts';
 import { type PieceTask, refinePieces, remainderAt } from './pieces.ts';
@@ -38,6 +39,14 @@ export function bound(problem: BoundProblem, cache: ModelCache = new Map(), leng
   const names = freeSymbols(expansion.function).filter((name) => name !== variable);
   const parameters = parameterBalls(names, assumptions);
   const missing = names.filter((name) => !parameters.has(name));
+  for (const name of missing) {
+    const scaled = scaleOut(problem, name, variable);
+    if (scaled === null) continue;
+    const inner = bound(scaled.problem, new Map(), lengthHint);
+    const factor = inner.factor ? build.product(scaled.factor, inner.factor) : scaled.factor;
+    const free = build.isOneNumber(factor);
+    return { ...inner, ...(free ? {} : { factor }), proof: [`f, the sum and the interval scale alike in ${name}; the bound is that for ${name} = 1${free ? '' : ' times the factor'}.`, ...inner.proof] };
+  }
   if (missing.length > 0) throw new Declined('needs-assumption', `A bound needs a range for ${missing.join(', ')}; add an assumption such as 0.9 <= ${missing[0] ?? 'c'} <= 1.1.`);
   const segments = segmentsOf(expansion, problem.interval, assumptions);
   let best: Result | null = null;
@@ -56,7 +65,7 @@ export function bound(problem: BoundProblem, cache: ModelCache = new Map(), leng
   const memory = { cache, lengthHint };
   improve(run(doubles(parameters), segments, problem, variable, check, memory));
   let precision = 128;
-  for (let round = 0; round < 4 && !settled(best); round += 1) {
+  for (let round = 0; round < (parameters.size > 0 && best !== null ? 0 : 4) && !settled(best); round += 1) {
     if (round > 0 && best !== null && (best as Result).upper === null) break;
     const before: Result | null = best;
     try {
@@ -67,7 +76,58 @@ export function bound(problem: BoundProblem, cache: ModelCache = new Map(), leng
     }
     precision *= 2;
   }
+  if (parameters.size > 0 && !settled(best)) best = overParameters(parameters, best, (box) => run(doubles(box), segments, problem, variable, check, { cache: new Map(), lengthHint }));
   return answer(best);
+}
+
+const MOST_BOXES = 40;
+const BOX_SLACK = 1.005;
+
+/** The supremum over the parameters too: lower bounds at the corners of their box, upper bounds on halves of it where the two differ. */
+function overParameters(parameters: ParameterBalls, start: Result | null, solve: (box: ParameterBalls) => Result | null): Result | null {
+  let lower = start?.lower ?? real.ZERO;
+  for (const corner of cornersOf(parameters)) {
+    const at = solve(corner);
+    if (at !== null) lower = real.maximum(lower, at.lower);
+  }
+  const open: { readonly box: ParameterBalls; readonly result: Result | null }[] = [{ box: parameters, result: start }];
+  const worse = (a: Result | null, b: Result | null): boolean => (a?.upper ? b !== null && (b.upper === null || real.compare(b.upper, a.upper) === 1) : false);
+  for (let count = 1; count < MOST_BOXES; count += 1) {
+    let worst = 0;
+    for (let k = 1; k < open.length; k += 1) if (worse(open[worst]?.result ?? null, open[k]?.result ?? null)) worst = k;
+    const item = open[worst];
+    if (!item) break;
+    const { result } = item;
+    if (result?.upper && real.compare(result.upper, real.multiply(lower, real.fromDouble(BOX_SLACK), 64)) !== 1) break;
+    const [name, ball] = [...item.box].reduce((a, b) => (real.compare(real.radius(b[1]), real.radius(a[1])) === 1 ? b : a));
+    const middle = real.midpoint(ball);
+    const halves = [real.fromEnds(real.lowerEnd(ball), middle, 128), real.fromEnds(middle, real.upperEnd(ball), 128)].map((part) => new Map([...item.box, [name, part] as const]));
+    const [left, right] = halves.map((box) => ({ box, result: solve(box) }));
+    if (!left || !right) break;
+    open[worst] = left;
+    open.push(right);
+  }
+  let upper: Ball | null = real.ZERO;
+  for (const { result } of open) upper = upper === null || !result?.upper ? null : real.maximum(upper, real.upperEnd(result.upper));
+  const shown = start ?? open.find(({ result }) => result !== null)?.result ?? null;
+  return shown === null ? null : { ...shown, upper: upper === null ? null : real.upperEnd(upper), lower, steps: [...shown.steps, `Parameters: ${open.length} boxes.`] };
+}
+
+/** Up to 8 choices of both ends of every parameter. */
+function cornersOf(parameters: ParameterBalls): readonly ParameterBalls[] {
+  let corners: Map<string, Ball>[] = [new Map()];
+  for (const [name, ball] of parameters) {
+    if (corners.length >= 8) {
+      corners = corners.map((corner) => new Map([...corner, [name, real.midpoint(ball)] as const]));
+      continue;
+    }
+    // The rounded ball may stick out a little; its ends are drawn in so that they are values of the parameter.
+    const inset = real.fromDouble(1 - 2 ** -40);
+    const half = real.multiply(real.radius(ball), inset, 80);
+    const ends = [real.subtract(real.midpoint(ball), half, 128), real.add(real.midpoint(ball), half, 128)].map(real.midpoint);
+    corners = corners.flatMap((corner) => ends.map((end) => new Map([...corner, [name, end] as const])));
+  }
+  return corners;
 }
 
 export function variableName(expansion: Expansion): string {
@@ -254,7 +314,8 @@ function atPoint<T>(segment: Segment, n: Numbers<T>, problem: BoundProblem, vari
         const result = supremumOfModel(r, g, { from: local.from, to: local.to, floor: settledLower, slack: SLACK / 4, check });
         settledLower = r.lowerEnd(r.maximum(settledLower, result.lower));
         const limit = r.multiply(settledLower, r.fromRational({ num: BigInt(Math.round(SETTLED * 2 ** 30) - 2 ** 19), den: 1n << 30n }));
-        const good = !r.isPositive(r.subtract(result.upper, limit));
+        // Sets of parameter values widen every coefficient; there the tail decides, and the box of parameters is divided instead.
+        const good = n.parameters.size > 0 ? !tailMatters(r, result) : !r.isPositive(r.subtract(result.upper, limit));
         if (!good && attempt < 2 && tailMatters(r, result)) {
           length += EXTRA;
           continue;
@@ -265,7 +326,7 @@ function atPoint<T>(segment: Segment, n: Numbers<T>, problem: BoundProblem, vari
           upper: result.upper,
           lower: settledLower,
           rest: part.rest === null ? null : wholeTask(part.rest, sumOf(segment.expansion), n),
-          steps: (show) => describeLocal(local, g.valuation, result.upper, result.tail, n, show, cut),
+          steps: (show) => [...describeLocal(local, g.valuation, result.upper, result.tail, n, show, cut), ...ruleOfThumb(g, result.upper, cut, n, show)],
         };
       }
     }
@@ -299,6 +360,18 @@ function describeLocal<T>(local: Local<T>, order: number, upper: T, tail: T, n: 
     `With s = ${power}/h, t <= ${show(local.scale)}${cut > 0 ? ' (the part next to the point)' : ''}: f - sum = s^${order} (r_0 + r_1 s + ... ), ${local.m.length} coefficients enclosed with ${n.precision} bits.`,
     `The rest of that series is at most ${show(tail)} in absolute value for all 0 <= s <= 1 (residual of the truncated series in the differential equations of the functions); the whole is at most ${show(upper)}.`,
   ];
+}
+
+/** Common practice, beside the proof: the first omitted term at the far end, and whether it would have misled. */
+function ruleOfThumb<T>(g: Model<T>, upper: T, cut: number, n: Numbers<T>, show: (x: T) => string): readonly string[] {
+  const [lead] = g.coefficients;
+  if (lead === undefined || cut > 0) return [];
+  const size = n.r.absolute(lead);
+  const ratio = n.r.divide(upper, n.r.upperEnd(size));
+  if (ratio === null) return [];
+  const factor = n.r.toDouble(ratio);
+  const verdict = factor > 1.1 ? `too small here by a factor of ${factor.toPrecision(3)}` : factor < 0.9 ? `larger than the truth here by a factor of ${(1 / factor).toPrecision(3)}` : 'near the truth here';
+  return [`Rule of thumb (common practice, no proof): the first omitted term is ${show(size)} at the far end, ${verdict}.`];
 }
 
 const pointExpression = (segment: Segment): Expression => {

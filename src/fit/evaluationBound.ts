@@ -10,8 +10,9 @@ export interface ErrorPiece {
   readonly x: Interval;
   /** Range of the exact value of the program on the piece. */
   readonly value: Interval;
-  /** |computed - exact| on the piece. */
+  /** |computed - exact| on the piece, and its part before the last rounding. */
   readonly error: number;
+  readonly before: number;
 }
 
 const PIECES = 64;
@@ -59,8 +60,8 @@ export function errorPieces(program: Program, variable: string, arithmetic: Arit
   const list: ErrorPiece[] = [];
   const add = (x: Interval): void => {
     budget.check();
-    const { exact, absolute } = evaluationError(program, variable, x, arithmetic);
-    list.push({ x, value: exact, error: absolute });
+    const { exact, absolute, before } = evaluationError(program, variable, x, arithmetic);
+    list.push({ x, value: exact, error: absolute, before });
   };
   const value = (x: number): number => Math.abs(approximateValue(program, variable, x));
   for (const x of arguments_(a, b, Q.toDouble(options.centre), nearest(options.centre, arithmetic))) {
@@ -139,12 +140,30 @@ export interface BinadeRun {
 /** With |p - f| <= r |f|, r < 1: |f| >= |p| / (1 + r). */
 export function binadeRuns(pieces: readonly ErrorPiece[], r: number, { result }: Arithmetic): BinadeRun[] {
   const runs: BinadeRun[] = [];
-  for (const { x, value, error } of pieces) {
-    const least = interval.down(interval.leastSize(value) / interval.up(1 + r));
-    const exponent = ulpExponent(Q.fromDouble(Math.max(0, least)), result);
-    const last = runs.at(-1);
-    if (last && last.exponent === exponent && last.high === x.lo) runs[runs.length - 1] = { ...last, high: x.hi, error: Math.max(last.error, error), size: Math.max(last.size, interval.size(value)) };
-    else runs.push({ low: x.lo, high: x.hi, exponent, error, size: interval.size(value) });
+  const add = (x: Interval, exponent: number, error: number, size: number): void => {
+    for (let k = runs.length - 1; k >= Math.max(0, runs.length - 4); k -= 1) {
+      const last = runs[k];
+      if (!last || last.exponent !== exponent || (last.high !== x.lo && last.high !== x.hi)) continue;
+      runs[k] = { ...last, high: x.hi, error: Math.max(last.error, error), size: Math.max(last.size, size) };
+      return;
+    }
+    runs.push({ low: x.lo, high: x.hi, exponent, error, size });
+  };
+  for (const { x, value, error, before } of pieces) {
+    const size = interval.size(value);
+    const least = Math.max(0, interval.down(interval.leastSize(value) / interval.up(1 + r)));
+    const most = interval.up(size / interval.down(1 - r));
+    const exponent = ulpExponent(Q.fromDouble(least), result);
+    const higher = ulpExponent(Q.fromDouble(most), result);
+    const level = 2 ** (higher + result.precision - 1);
+    if (higher !== exponent + 1 || most > level * (1 + 2 ** -12)) {
+      add(x, exponent, error, size);
+      continue;
+    }
+    // A sliver around a power of two: where |f| is below it, what is rounded last is less than this beyond it (a float), and rounds by no more than that.
+    const beyond = interval.up(interval.up(r * level) + before);
+    add(x, exponent, interval.up(before + Math.min(2 ** exponent, Math.max(2 ** (exponent - 1), beyond))), size);
+    add(x, higher, error, size);
   }
   return runs;
 }

@@ -17,6 +17,8 @@ export interface RoundedValue {
   readonly exact: Interval;
   /** |computed - exact| at most this, where nothing overflows. */
   readonly absolute: number;
+  /** The part of it that was there before the last rounding. */
+  readonly before: number;
   /** The exact value at the two ends of the argument interval, and its slope in between: they make `exact` tight. */
   readonly atLow: Interval;
   readonly atHigh: Interval;
@@ -46,9 +48,9 @@ export function roundingError(magnitude: number, format: FloatFormat): number {
   return Math.min(half, below, magnitude);
 }
 
-export const exactValue = (exact: Interval, atLow = exact, atHigh = exact, slope: Interval = interval.ZERO): RoundedValue => ({ exact, absolute: 0, atLow, atHigh, slope });
+export const exactValue = (exact: Interval, atLow = exact, atHigh = exact, slope: Interval = interval.ZERO): RoundedValue => ({ exact, absolute: 0, before: 0, atLow, atHigh, slope });
 /** The argument itself: any float of the interval. */
-export const argumentValue = (x: Interval): RoundedValue => ({ exact: x, absolute: 0, atLow: { lo: x.lo, hi: x.lo }, atHigh: { lo: x.hi, hi: x.hi }, slope: interval.ONE });
+export const argumentValue = (x: Interval): RoundedValue => ({ exact: x, absolute: 0, before: 0, atLow: { lo: x.lo, hi: x.lo }, atHigh: { lo: x.hi, hi: x.hi }, slope: interval.ONE });
 
 type Exact = Pick<RoundedValue, 'exact' | 'atLow' | 'atHigh' | 'slope'>;
 
@@ -66,8 +68,10 @@ function rounded(exact: Exact, absolute: number, format: FloatFormat): RoundedVa
   const magnitude = addUp(interval.size(exact.exact), absolute);
   const limit = 2 ** format.emax * (2 - 2 ** (1 - format.precision));
   if (!(magnitude <= limit)) throw new Declined('bad-request', `The evaluation can overflow ${format.name} on this interval; take a smaller interval or a wider format.`);
-  return { ...exact, absolute: addUp(absolute, roundingError(magnitude, format)) };
+  return withError(exact, addUp(absolute, roundingError(magnitude, format)), absolute);
 }
+
+const withError = ({ exact, atLow, atHigh, slope }: Exact, absolute: number, before: number): RoundedValue => ({ exact, absolute, before, atLow, atHigh, slope });
 
 const productError = (a: RoundedValue, b: RoundedValue): number =>
   addUp(addUp(mulUp(interval.size(a.exact), b.absolute), mulUp(interval.size(b.exact), a.absolute)), mulUp(a.absolute, b.absolute));
@@ -85,6 +89,9 @@ function sterbenz(a: RoundedValue, b: RoundedValue): boolean {
   const apart = (x: Interval, y: Interval): boolean => x.lo > 0 && y.lo > 0 && y.hi <= 2 * x.lo && x.hi <= 2 * y.lo;
   return apart(a.exact, interval.negate(b.exact)) || apart(interval.negate(a.exact), b.exact);
 }
+
+/** Constants are looked at once per format, not once per piece. */
+const numbers = new WeakMap<Expression, { readonly format: FloatFormat; readonly value: RoundedValue; readonly power: number | null }>();
 
 /** Evaluates a program's trees over one argument interval, step by step. */
 class Evaluator {
@@ -110,14 +117,13 @@ class Evaluator {
         return value;
       }
       case 'number':
-        if (!isRepresentable(e.value, this.#format)) throw new Declined('bad-request', 'A coefficient is not a number of the format.');
-        return exactValue(interval.fromRational(e.value));
+        return this.#number(e);
       case 'negation': {
         const inner = this.visit(e.operand);
-        return { absolute: inner.absolute, exact: interval.negate(inner.exact), atLow: interval.negate(inner.atLow), atHigh: interval.negate(inner.atHigh), slope: interval.negate(inner.slope) };
+        return { absolute: inner.absolute, before: inner.before, exact: interval.negate(inner.exact), atLow: interval.negate(inner.atLow), atHigh: interval.negate(inner.atHigh), slope: interval.negate(inner.slope) };
       }
       case 'sum':
-        return e.terms.map((t) => this.visit(t)).reduce((a, b) => (sterbenz(a, b) ? { ...this.#sum(a, b), absolute: 0 } : rounded(this.#sum(a, b), addUp(a.absolute, b.absolute), this.#format)));
+        return e.terms.map((t) => this.visit(t)).reduce((a, b) => (sterbenz(a, b) ? withError(this.#sum(a, b), 0, 0) : rounded(this.#sum(a, b), addUp(a.absolute, b.absolute), this.#format)));
       case 'product':
         return this.#product(e.factors);
       case 'quotient':
@@ -125,12 +131,22 @@ class Evaluator {
       case 'call': {
         const [x, y, z] = e.args.map((a) => this.visit(a));
         if (e.function !== 'fma' || !x || !y || !z) throw new Declined('bad-request', `The call of ${e.function} is not part of a polynomial.`);
-        const inner: RoundedValue = { ...this.#times(x, y), absolute: productError(x, y) };
+        const error = productError(x, y);
+        const inner = withError(this.#times(x, y), error, error);
         return rounded(this.#sum(inner, z), addUp(inner.absolute, z.absolute), this.#format);
       }
       default:
         throw new Declined('bad-request', 'Only sums, products and quotients of floats can be bounded.');
     }
+  }
+
+  #number(e: Extract<Expression, { kind: 'number' }>): RoundedValue {
+    const known = numbers.get(e);
+    if (known?.format === this.#format) return known.value;
+    if (!isRepresentable(e.value, this.#format)) throw new Declined('bad-request', 'A coefficient is not a number of the format.');
+    const value = exactValue(interval.fromRational(e.value));
+    numbers.set(e, { format: this.#format, value, power: powerOfTwoFactor(e) });
+    return value;
   }
 
   #sum(a: Exact, b: Exact): Exact {
@@ -148,16 +164,16 @@ class Evaluator {
     const [first, ...rest] = factors;
     if (!first) throw new Declined('bad-request', 'An empty product has no evaluation.');
     let left = this.visit(first);
-    let leftPower = powerOfTwoFactor(first);
+    let leftPower = numbers.get(first)?.power ?? null;
     for (const node of rest) {
       const value = this.visit(node);
       const whole = this.#times(left, value);
       const error = productError(left, value);
-      const k = leftPower ?? powerOfTwoFactor(node);
+      const k = leftPower ?? numbers.get(node)?.power ?? null;
       leftPower = null;
       // By a power of two of at least one nothing is lost; by a smaller one only digits below the smallest subnormal.
       if (k === null || (k < 0 && interval.leastSize(whole.exact) < 2 ** this.#format.emin)) left = rounded(whole, error, this.#format);
-      else left = { ...rounded(whole, error, this.#format), absolute: error };
+      else left = withError(rounded(whole, error, this.#format), error, error);
     }
     return left;
   }

@@ -7,7 +7,7 @@ import { fromFixed } from './fixed.ts';
 import { type FloatFormat, powerOfTwo } from './format.ts';
 import { type Arithmetic, polynomialProgram, type Program } from './program.ts';
 import { certified, type CertifiedPolynomial, errorParts, type EvaluationProof, type FitMeasure, type ProofProblem, type ProvedError, proveProgram } from './proof.ts';
-import { type Basis, basisFor, bestOfDegree, type Found, goalOf, leastDegree, leastWithin, nextDegree, type Search } from './search.ts';
+import { type Basis, basisFor, bestOfDegree, type Found, leastDegree, leastWithin, nextDegree, type Search } from './search.ts';
 import { type FitTarget, prepareTarget } from './target.ts';
 
 export interface PolynomialProblem {
@@ -64,7 +64,7 @@ export function fitPolynomial(problem: PolynomialProblem, budget: Budget): Polyn
     return finished(setting, candidate(setting, found, budget), budget);
   }
   const tolerance = problem.tolerance ?? Q.ZERO;
-  let found = leastWithin(search, goalOf(relativeGoal(problem), WORKING_BITS), budget);
+  let found = leastWithin(search, relativeGoal(problem), budget);
   if (!found) throw new Declined('bad-request', 'No polynomial of degree up to 120 keeps this tolerance; take a smaller interval or a larger tolerance.');
   let best: Candidate | null = null;
   // The least degree for the approximation alone may lose the tolerance to rounding: then the next ones are tried while that can help.
@@ -115,7 +115,7 @@ const shiftBy = (coefficients: readonly Rational[], { powers }: { readonly power
 function candidate({ problem, search, proof }: Setting, found: Found, budget: Budget): Candidate {
   const { format, variable, form, fma } = problem;
   const { order, zero } = search.target;
-  const rounded: RoundedCoefficients | null = roundCoefficients(found.result.coefficients, found.problem, found.result.reference, format, budget);
+  const rounded: RoundedCoefficients | null = roundCoefficients(found, format, budget);
   if (!rounded) throw new Declined('bad-request', `A coefficient is beyond the range of ${format.name}; take another format or interval.`);
   const polynomial = certified(shiftBy(rounded.values, found.problem, order), proof, budget);
   let best: Candidate | null = null;
@@ -132,7 +132,7 @@ function candidate({ problem, search, proof }: Setting, found: Found, budget: Bu
 function finished({ search, proof }: Setting, { found, polynomial, program, writtenProgram, proof: total }: Candidate, budget: Budget): PolynomialFit {
   const { target, basis } = search;
   const unrounded = shiftBy(
-    found.result.coefficients.map((c) => fromFixed(c, found.problem.bits)),
+    found.result.coefficients.map((c) => fromFixed(c, found.problem.grid.bits)),
     found.problem,
     target.order,
   );

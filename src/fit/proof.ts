@@ -107,7 +107,7 @@ export interface EvaluationProof {
 /** The total error of one program that evaluates the polynomial. Throws Declined where it can overflow or where no relative bound is known. */
 export function proveProgram(program: Program, polynomial: CertifiedPolynomial, problem: ProofProblem, budget: Budget): EvaluationProof {
   const { measure, arithmetic } = problem;
-  const pieces = errorPieces(program, problem.variable, arithmetic, { low: problem.low, high: problem.high, centre: problem.centre, binades: measure === 'ulp' }, budget);
+  const pieces = errorPieces(program, problem.variable, arithmetic, { low: problem.symmetric ? Q.ZERO : problem.low, high: problem.high, centre: problem.centre, binades: measure === 'ulp' }, budget);
   const upper = polynomial.whole.upper;
   if (measure === 'absolute') {
     const spent = fromBound(absoluteError(pieces));

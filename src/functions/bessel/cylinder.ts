@@ -1,6 +1,6 @@
 /** Bessel functions J, Y, I, K of x for a fixed order. Sources: DLMF 10.2, 10.8, 10.11, 10.17, 10.25, 10.31, 10.34, 10.40. */
 import { type Expression, Q, type Rational } from '../../expression/index.ts';
-import { argument, call, cos, euler, exp, gamma, half, imaginary, lift, log, minus, neg, over, pi, plus, pow, q, scaled, sin, sqrt, square, times } from '../compose.ts';
+import { argument, bigO, call, cos, euler, exp, gamma, half, imaginary, lift, log, minus, neg, over, pi, plus, pow, q, scaled, sin, sqrt, square, times } from '../compose.ts';
 import type { FormalSeries, FunctionDescription, LocalForm, Place } from '../description.ts';
 import { asInteger, asRational } from '../exactForms.ts';
 import { F1, F2, F3, form, hypergeometricSeries, isAt, ratioSeries, series, terminationLength } from '../formal.ts';
@@ -130,9 +130,29 @@ function integerSecondSolution(kind: 'Y' | 'K', n: number, x: Expression): Local
   return form(body, [entire, finite, harmonic], 'DLMF 10.31.1');
 }
 
+/** Terms of the convergent series in 1/(nu+1)_k that are written before the O-term. */
+const LARGE_ORDER_TERMS = 16;
+/** Large order, fixed argument: J and I by their power series, whose terms fall by 1/nu each (DLMF 10.19.1); K and Y by I and J of order -nu, the rest being smaller by nu^-2nu (10.19.2, 10.41). */
+function largeOrder(kind: Kind, x: Expression, place: Place): LocalForm | null {
+  if (place.kind !== 'infinite' || place.direction !== 1) return null;
+  const nu = place.argument;
+  const z = times(kind === 'J' || kind === 'Y' ? q(-1, 4) : q(1, 4), square(x));
+  const upper = kind === 'J' || kind === 'I';
+  let term: Expression = lift(1);
+  const terms: Expression[] = [];
+  for (let k = 0; k < LARGE_ORDER_TERMS; k++) {
+    terms.push(term);
+    term = over(times(term, z), times(k + 1, upper ? plus(nu, k + 1) : minus(k + 1, nu)));
+  }
+  const sum = plus(...terms, bigO(pow(nu, -LARGE_ORDER_TERMS)));
+  if (upper) return form(times(over(pow(times(half, x), nu), gamma(plus(nu, 1))), sum), [], 'DLMF 10.2.2, 10.25.2, 10.19.1');
+  const lead = times(gamma(nu), pow(times(half, x), neg(nu)));
+  return form(times(kind === 'K' ? half : neg(over(1, pi)), lead, sum), [], 'DLMF 10.2.3, 10.27.4, 10.19.2', { subdominantDropped: true });
+}
+
 function cylinderLocal(kind: Kind): NonNullable<FunctionDescription['local']> {
   return (args, index, place: Place) => {
-    if (index !== 1) return null;
+    if (index === 0) return largeOrder(kind, argument(args, 1), place);
     const order = orderOf(args);
     if (place.kind === 'infinite') {
       if (place.direction === -1) return atMinusInfinity(kind, order, place.argument);

@@ -92,12 +92,22 @@ export function incompleteDerivative(which: 'F' | 'E'): NonNullable<FunctionDesc
 /** Coefficients in m at 0: binomial(-1/2 or 1/2, k)(-1)^k times the integral of sin^2k from 0 to phi, by its reduction formula. */
 export function incompleteLocal(which: 'F' | 'E'): NonNullable<FunctionDescription['local']> {
   return (args, index, place: Place) => {
-    if (index !== 1 || place.kind !== 'finite' || !isAt(place, 0)) return null;
+    if (index !== 1 || place.kind !== 'finite') return null;
     const phi = argument(args, 0);
+    if (isAt(place, 1)) return incompleteAtOne(which, phi, neg(place.offset));
+    if (!isAt(place, 0)) return null;
     const powers = recurrence<Expression>(phi, (k, previous) => over(minus(times(2 * k - 1, previous), times(cos(phi), pow(sin(phi), 2 * k - 1))), 2 * k));
     const scales = recurrence<Rational>(Q.ONE, (k, previous) => Q.multiply(previous, q(which === 'F' ? 2 * k - 1 : 2 * k - 3, 2 * k)));
     return form(F1, [series(place.offset, (k) => times(scales(k), powers(k)))], 'DLMF 19.2.4, 19.2.5, expanded in k^2 under the integral');
   };
+}
+/** At m = 1 for |phi| < pi/2, in m1 = 1 - m: Delta = cos (1 + m1 tan^2)^(1/2); the integrals of tan^2k sec and tan^2k cos by reduction. */
+function incompleteAtOne(which: 'F' | 'E', phi: Expression, m1: Expression): LocalForm {
+  const tangent = call('tan', phi);
+  const secants = recurrence<Expression>(call('asinh', tangent), (k, previous) => over(minus(times(pow(tangent, 2 * k - 1), over(1, cos(phi))), times(2 * k - 1, previous)), 2 * k));
+  const cosines = recurrence<Expression>(sin(phi), (k, previous) => minus(secants(k - 1), previous));
+  const scales = recurrence<Rational>(Q.ONE, (k, previous) => Q.multiply(previous, q(which === 'F' ? 1 - 2 * k : 3 - 2 * k, 2 * k)));
+  return form(F1, [series(m1, (k) => times(scales(k), which === 'F' ? secants(k) : cosines(k)))], 'DLMF 19.2.4, 19.2.5, expanded in 1 - k^2 under the integral, |phi| < pi/2');
 }
 export function incompleteValue(which: 'F' | 'E'): NonNullable<FunctionDescription['value']> {
   return (args) => {

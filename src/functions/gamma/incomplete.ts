@@ -1,6 +1,6 @@
 /** Incomplete gamma functions of x for a fixed first argument. Sources: DLMF 8.2 to 8.11. */
 import { type Expression, Q } from '../../expression/index.ts';
-import { argument, euler, exp, gamma, lift, log, minus, neg, over, plus, pow, scaled, times } from '../compose.ts';
+import { argument, bigO, euler, exp, gamma, lift, log, minus, neg, over, plus, pow, scaled, times } from '../compose.ts';
 import type { FormalSeries, LocalForm, Place } from '../description.ts';
 import { asInteger, asRational } from '../exactForms.ts';
 import { alternating, F1, form, isAt, ratioSeries, series, terminationLength } from '../formal.ts';
@@ -28,7 +28,25 @@ export function lowerSeriesAtZero(a: Expression, x: Expression): FormalSeries {
   });
 }
 
+/** gamma(a,x) for large a and fixed x > 0: x^a e^-x sum of x^k/(a)_(k+1) (DLMF 8.11.4, 8.11(ii)), written out with an O-term. */
+const LARGE_PARAMETER_TERMS = 16;
+function largeParameter(x: Expression, place: Place): Expression | null {
+  if (place.kind !== 'infinite' || place.direction !== 1) return null;
+  const a = place.argument;
+  let term: Expression = over(1, a);
+  const terms: Expression[] = [];
+  for (let k = 0; k < LARGE_PARAMETER_TERMS; k++) {
+    terms.push(term);
+    term = over(times(term, x), plus(a, k + 1));
+  }
+  return times(pow(x, a), exp(neg(x)), plus(...terms, bigO(pow(a, -LARGE_PARAMETER_TERMS - 1))));
+}
+
 export function upperGammaLocal(args: readonly Expression[], index: number, place: Place): LocalForm | null {
+  if (index === 0) {
+    const lower = largeParameter(argument(args, 1), place);
+    return lower && place.kind === 'infinite' ? form(minus(gamma(place.argument), lower), [], 'DLMF 8.2.3, 8.11.4') : null;
+  }
   if (index !== 1) return null;
   const a = argument(args, 0);
   if (place.kind === 'infinite') {
@@ -47,6 +65,10 @@ export function upperGammaLocal(args: readonly Expression[], index: number, plac
 }
 
 export function lowerGammaLocal(args: readonly Expression[], index: number, place: Place): LocalForm | null {
+  if (index === 0) {
+    const lower = largeParameter(argument(args, 1), place);
+    return lower && form(lower, [], 'DLMF 8.11.4');
+  }
   if (index !== 1) return null;
   const a = argument(args, 0);
   if (place.kind === 'infinite') {

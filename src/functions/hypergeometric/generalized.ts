@@ -34,6 +34,10 @@ export function hypergeometricLocal(args: readonly Expression[], index: number, 
   const parts = hypergeometricParts(args);
   if (!parts || index !== args.length - 1) return null;
   const { p, q, tops, bottoms } = parts;
+  // Elementary cases are expanded as what they are.
+  const whole = place.kind === 'infinite' ? place.argument : plus(place.center, place.offset);
+  const closed = place.kind === 'finite' && isAt(place, 0) ? null : hypergeometricValue([...args.slice(0, -1), whole]);
+  if (closed) return form(closed, [], 'DLMF 15.4, 16.2');
   if (place.kind === 'finite') {
     if (isAt(place, 0)) {
       const sum = hypergeometricSeries(place.offset, tops, bottoms);

@@ -1,8 +1,9 @@
 /** erf and its relatives, Fresnel integrals. Sources: DLMF 7.6, 7.12, 7.17. */
 import { type Expression, Q, type Rational } from '../../expression/index.ts';
-import { cos, exp, half as oneHalf, minus, neg, over, pi, plus, q, sin, sqrt, square, times } from '../compose.ts';
+import { cos, exp, half as oneHalf, log, minus, neg, over, pi, plus, q, sin, sqrt, square, times } from '../compose.ts';
 import type { FormalSeries, LocalForm, Place } from '../description.ts';
 import { alternating, F1, F2, form, isAt, series } from '../formal.ts';
+import { inverseTail } from './inverseTail.ts';
 import { doubleFactorial, factorial, fullRecurrence, risingFactorial } from '../sequences.ts';
 
 const atZero = (place: Place): Expression | null => (place.kind === 'finite' && isAt(place, 0) ? place.offset : null);
@@ -63,10 +64,17 @@ const inverseErrorSeries = (x: Expression): FormalSeries =>
 
 export function erfinvLocal(_args: readonly Expression[], _index: number, place: Place): LocalForm | null {
   const u = atZero(place);
-  return u && form(F1, [inverseErrorSeries(u)], 'DLMF 7.17.2; Carlitz 1963 for the recurrence (from memory)');
+  if (u) return form(F1, [inverseErrorSeries(u)], 'DLMF 7.17.2; Carlitz 1963 for the recurrence (from memory)');
+  if (place.kind !== 'finite') return null;
+  // inverf(1 - v) = inverfc(v), odd.
+  if (isAt(place, 1)) return form(inverseTail(neg(log(neg(place.offset)))), [], 'DLMF 7.17(iii), 7.12.1');
+  return isAt(place, -1) ? form(neg(inverseTail(neg(log(place.offset)))), [], 'DLMF 7.17(iii), 7.12.1') : null;
 }
 export function erfcinvLocal(_args: readonly Expression[], _index: number, place: Place): LocalForm | null {
-  if (place.kind !== 'finite' || !isAt(place, 1)) return null;
+  if (place.kind !== 'finite') return null;
+  if (isAt(place, 0)) return form(inverseTail(neg(log(place.offset))), [], 'DLMF 7.17(iii), 7.12.1');
+  if (isAt(place, 2)) return form(neg(inverseTail(neg(log(neg(place.offset))))), [], 'DLMF 7.17(iii), 7.12.1');
+  if (!isAt(place, 1)) return null;
   return form(neg(F1), [inverseErrorSeries(place.offset)], 'DLMF 7.17.2: inverfc(1 + u) = -inverf(u)');
 }
 

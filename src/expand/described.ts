@@ -1,6 +1,6 @@
 /** A function by its description: local form at singular places and infinity, differential equation or derivative at regular points. */
 import type { Element } from '../algebra/types.ts';
-import { build, type CallNode, type Expression, Q, type Rational } from '../expression/index.ts';
+import { build, type CallNode, type Expression, Q, type Rational, walk } from '../expression/index.ts';
 import { acceptsArity, describe, type FormalSeries, type FunctionDescription, type LocalForm, type Place } from '../functions/index.ts';
 import { Declined } from '../outcome.ts';
 import { add, alongDerivative, beyondAllOrders, compose, type Context, eventualSign, exactOf, finiteStream, growth, isRational, leading, monomial, type Multi, multiply, plainText, scaleBy, Series, signOfExponent, split, withExact } from '../series/index.ts';
@@ -106,7 +106,13 @@ function fasterPart(f: Series, large: Multi): boolean {
 /** The same for a call that stands as a constant in the formula. */
 export function refusePoleOf(s: Session, e: CallNode, evaluate: Evaluate): void {
   const d = describe(e.function);
-  if (d?.local && acceptsArity(d, e.args.length)) refusePole(s, d, e.args.map((a) => s.context.field.fromExpression(a)), evaluate);
+  if (!d || !acceptsArity(d, e.args.length)) return;
+  if (!d.local) {
+    const tree = d.definition?.(e.args);
+    if (tree) for (const node of walk(tree)) if (node.kind === 'call' && node.function !== e.function) refusePoleOf(s, node, evaluate);
+    return;
+  }
+  refusePole(s, d, e.args.map((a) => s.context.field.fromExpression(a)), evaluate);
 }
 
 /** A value at a rational constant where the function's local form is unbounded: there is none. */

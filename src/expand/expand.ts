@@ -1,11 +1,12 @@
 /** The door's function: both sides of a point, merged where they agree. */
-import { dependsOn, type Expression, Q } from '../expression/index.ts';
+import { build, dependsOn, type Expression, Q } from '../expression/index.ts';
 import { attempt, type Budget, Declined, type Outcome } from '../outcome.ts';
 import { addElements, isRational, multiplyElements, plainText } from '../series/index.ts';
 import { assemble } from './assemble.ts';
 import { inCompound } from './compound.ts';
 import type { Expansion, ExpansionProblem } from './expansion.ts';
 import type { Direction } from './open-side.ts';
+import { radiusOf } from './radius.ts';
 import { expandSide, type SideResult } from './side.ts';
 
 /**
@@ -22,8 +23,17 @@ export function expand(problem: ExpansionProblem, budget: Budget): Outcome<Expan
 function expandSymbol(problem: ExpansionProblem, budget: Budget): Expansion {
   validate(problem);
   if (problem.point === 'inf' || problem.point === '-inf') return oneSide(problem, problem.point, budget);
-  if (problem.side !== 'both') return oneSide(problem, problem.side, budget);
-  return bothSides(problem, budget);
+  return withRadius(problem, problem.side === 'both' ? bothSides(problem, budget) : oneSide(problem, problem.side, budget), budget);
+}
+
+/** The radius of a power or Laurent series; 0 where it diverges. */
+function withRadius(problem: ExpansionProblem, found: Expansion, budget: Budget): Expansion {
+  if (found.divergent) return { ...found, radius: { value: build.number(0) } };
+  const powers = [...found.terms, ...(found.remainder ? [found.remainder] : [])];
+  const laurent = powers.every((t) => t.log === 0 && t.scale === null && t.power?.kind === 'number' && t.power.value.den === 1n);
+  if (!laurent || found.prefactor || found.exact || found.left) return found;
+  const radius = radiusOf(problem, budget);
+  return radius ? { ...found, radius } : found;
 }
 
 function validate(problem: ExpansionProblem): void {

@@ -4,6 +4,7 @@ import { build, type Expression, Q } from '../../expression/index.ts';
 import { Declined } from '../../outcome.ts';
 import { add, compareMonomials, growth, isZero, type Monomial, monomialOf, monomialSeries, type Multi, multiplyMonomials, scaleBy, Series, unitMonomial } from '../../series/index.ts';
 import { evaluate } from '../evaluate.ts';
+import { solveFor } from './explicit.ts';
 import { infiniteStarts } from './infinite.ts';
 import { polygonEdges } from './polygon.ts';
 import { type Curve, separate, taylorAt } from './taylor.ts';
@@ -34,7 +35,15 @@ export function startsOf(curve: Curve, near: Element | 1 | -1 | null, complex: b
   if (atZero?.complete) return explore(curve, Q.ZERO, atZero.coefficients, null, complex, 0);
   const limits = finiteLimits(curve);
   const finite = limits.flatMap((y) => atLimit(curve, y, complex));
-  return [...finite, ...infiniteStarts(curve)];
+  const found = [...finite, ...infiniteStarts(curve)];
+  return found.length > 0 ? found : explicitStart(curve);
+}
+
+/** The principal root where the unknown occurs once. */
+function explicitStart(curve: Curve): Start[] {
+  const parts = separate(curve);
+  const tree = parts && solveFor(parts.left, curve.unknown, parts.right);
+  return tree ? [{ value: evaluate(curve.side.session, tree), multiplicity: 1, exact: true }] : [];
 }
 
 function isLargeWithSign(curve: Curve, value: Multi, sign: 1 | -1): boolean {

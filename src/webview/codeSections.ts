@@ -7,7 +7,7 @@ import type { CodeControls, Shown } from './messages.ts';
 type Fitted = Extract<Shown, { readonly kind: 'fit' }>;
 type Guarded = Extract<Shown, { readonly kind: 'guard' }>;
 
-export function fitSection(shown: Fitted, settle: (controls: CodeControls) => void): Child[] {
+export function fitSection(shown: Fitted, into: HTMLElement, settle: (controls: CodeControls) => void): Child[] {
   const { answer } = shown;
   const controls = codeControls('fit', shown.controls, settle);
   if (!answer) return [controls];
@@ -26,6 +26,7 @@ export function fitSection(shown: Fitted, settle: (controls: CodeControls) => vo
       h('p', {}, t('degree', answer.degree), answer.taylorDegree !== null && h('span', { class: 'muted' }, `; ${t('taylor', answer.taylorDegree)}`)),
       answer.operations && h('p', { class: 'muted' }, t('operations', answer.operations.multiplications, answer.operations.additions)),
     ),
+    into,
     h('section', {}, h('h2', {}, `${t('bound')} (${bound.measure})`), h('table', { class: 'figures' }, h('tbody', {}, ...parts.map(([name, value]) => h('tr', {}, h('th', { scope: 'row' }, name), h('td', {}, value))), h('tr', { class: 'total' }, h('th', { scope: 'row' }, t('total')), h('td', {}, bound.total)))), h('p', { class: 'muted' }, bound.method)),
     code(answer.code),
     h(
@@ -38,7 +39,7 @@ export function fitSection(shown: Fitted, settle: (controls: CodeControls) => vo
   ];
 }
 
-export function guardSection(shown: Guarded, settle: (controls: CodeControls) => void): Child[] {
+export function guardSection(shown: Guarded, into: HTMLElement, settle: (controls: CodeControls) => void): Child[] {
   const { answer } = shown;
   const controls = codeControls('guard', shown.controls, settle);
   if (!answer) return [controls];
@@ -46,6 +47,7 @@ export function guardSection(shown: Guarded, settle: (controls: CodeControls) =>
   return [
     controls,
     h('div', { class: 'facts', 'aria-live': 'polite' }, h('p', {}, h('span', { class: 'muted' }, `${t('worst')} `), h('strong', {}, answer.bound.whole)), answer.switch !== null && h('p', {}, t('switch', answer.switch))),
+    into,
     answer.ranges.length > 0 &&
       h(
         'section',

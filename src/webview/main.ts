@@ -73,8 +73,8 @@ function content(now: PageState): Child[] {
     ...(shown.kind === 'nothing' ? [h('p', { class: 'muted message' }, t('empty'))] : []),
     ...(shown.kind === 'failure' ? failure(shown.message, shown.candidates, shown.asked) : []),
     ...(shown.kind === 'expansion' ? expansionSection(shown, into(now), Math.max(220, root.clientWidth - 2), choose) : []),
-    ...(shown.kind === 'fit' ? [...fitSection(shown, settle), into(now)] : []),
-    ...(shown.kind === 'guard' ? [...guardSection(shown, settle), into(now)] : []),
+    ...(shown.kind === 'fit' ? fitSection(shown, into(now), settle) : []),
+    ...(shown.kind === 'guard' ? guardSection(shown, into(now), settle) : []),
     history(now),
   ];
 }

@@ -38,7 +38,7 @@ tally.close();
 async function inHost() {
   process.stdout.write('-- inside the extension host\n');
   const server = await serveWorkbench({ folder: DEMO, settings: SETTINGS, suite: 'dist/test/suite.web.js' });
-  const page = await (await browser.newContext({ viewport: { width: 1300, height: 900 } })).newPage();
+  const page = await (await browser.newContext({ viewport: { width: 1300, height: 900 }, permissions: ['clipboard-read', 'clipboard-write'] })).newPage();
   await followSuite(page, server.url, tally);
   await page.context().close();
   await server.stop();

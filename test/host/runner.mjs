@@ -35,7 +35,7 @@ export async function followSuite(page, url, tally) {
   const ended = new Promise((resolve) => void page.exposeFunction('codeAutomationExit', resolve));
   await page.exposeFunction('codeAutomationLog', (_type, args) => {
     const line = args.filter((arg) => typeof arg === 'string' && !arg.startsWith('color:')).join(' ').replace(/^%c\S* ?/, '');
-    if (!/^(host:|ok |FAILED |in-host:|activation|typing)/.test(line)) return;
+    if (!/^(host:|ok |FAILED |in-host:|activation|typing|hover:)/.test(line)) return;
     process.stdout.write(`${line}\n`);
     const count = /^in-host: (\d+) passed, (\d+) failed/.exec(line);
     if (!count) return;

@@ -76,7 +76,9 @@ function complete(question: Question, sources: Sources, request: ConsultRequest)
   const setting = request.setting ?? {};
   const filled: Partial<Record<keyof Question, Source>> = { ...sources };
   for (const key of Object.keys(question) as (keyof Question)[]) if (filled[key] === undefined && key in setting) filled[key] = 'setting';
-  return { point: 'default', side: 'default', terms: 'default', ...filled };
+  // Where the text left no choice of the quantity, it also said where that tends to.
+  const point: Source = filled.variable === 'text' || filled.small === 'text' ? 'text' : 'default';
+  return { point, side: 'default', terms: 'default', ...filled };
 }
 
 /** Without an interval nothing is bounded, and a tolerance serves only the reach. An order replaces the number of terms. */

@@ -50,7 +50,7 @@ tally.close();
 async function inHost() {
   process.stdout.write('-- inside the extension host\n');
   const server = await startServer({ workspace: workspace(), vsix, settings: SETTINGS });
-  const page = await (await browser.newContext({ viewport: { width: 1300, height: 900 } })).newPage();
+  const page = await (await browser.newContext({ viewport: { width: 1300, height: 900 }, permissions: ['clipboard-read', 'clipboard-write'] })).newPage();
   await withSuite(page, server.port, path.join(ROOT, 'dist/test/suite.js'), path.join(HERE, 'window'));
   await followSuite(page, server.url, tally);
   await page.context().close();

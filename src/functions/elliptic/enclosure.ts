@@ -205,6 +205,7 @@ export const ellipticAlgorithms: Readonly<Record<string, Algorithm>> = {
   ellipticFParameter: { real: (kit, [phi, m]) => (phi && m ? incomplete(kit, phi, m, 'F') : null) },
   ellipticEIncompleteParameter: { real: (kit, [phi, m]) => (phi && m ? incomplete(kit, phi, m, 'E') : null) },
   ellipticPiParameter: { real: (kit, [n, m]) => (n && m ? completePi(kit, n, m) : null) },
+  jacobiAm: { real: (kit, [u, k]) => (u && k ? (kit.a.isZero(u) ? kit.a.zero : amplitude(kit, u, kit.a.square(k))) : null) },
   jacobiSn: jacobi('sn'),
   jacobiCn: jacobi('cn'),
   jacobiDn: jacobi('dn'),

@@ -6,9 +6,9 @@ import { names } from '../naming.ts';
 import { enclosed } from '../enclosure/wrap.ts';
 import { ellipticAlgorithms } from './enclosure.ts';
 import { completeEquation, completeLocal, completeValue, eDerivative, incompleteDerivative, incompleteLocal, incompleteValue, kDerivative, piDerivative, piLocal, piValue } from './integrals.ts';
-import { jacobiDerivative, jacobiLocal, jacobiValue } from './jacobi.ts';
+import { amplitudeLocal, jacobiDerivative, jacobiLocal, jacobiValue } from './jacobi.ts';
 
-const { call, number, power } = build;
+const { call, negation, number, power } = build;
 const sq = (e: Expression): Expression => power(e, 2);
 const swapLast = { read: (a: readonly Expression[]): readonly Expression[] | null => (a.length === 2 ? [...a].reverse() : null), write: (a: readonly Expression[]): readonly Expression[] | null => [...a].reverse() };
 
@@ -33,6 +33,54 @@ const descriptions: readonly FunctionDescription[] = [
     names: names({ latex: [`\\operatorname{${id}}`, `\\${id}`], latexForm: (a) => `\\operatorname{${id}}(${a.join(', ')})`, unicodeForm: (a) => `${id}(${a.join(', ')})`, plain: [id], mpmath: ([u = '', k = '']) => `ellipfun("${id}",${u},(${k})**2)` }),
     source: 'DLMF 22.2',
   })),
+  {
+    id: 'jacobiAm',
+    title: "Jacobi's amplitude function (argument, modulus k)",
+    arity: 2,
+    local: amplitudeLocal,
+    derivative: ([u = number(0), k = number(0)], index) => (index === 0 ? call('jacobiDn', u, k) : null),
+    value: ([u, k]) => (u?.kind === 'number' && u.value.num === 0n ? number(0) : k?.kind === 'number' && k.value.num === 0n && u ? u : null),
+    names: names({ latex: ['\\operatorname{am}', '\\am'], latexForm: (a) => `\\operatorname{am}(${a.join(', ')})`, unicodeForm: (a) => `am(${a.join(', ')})`, plain: ['am'], mpmath: ([u = '', k = '']) => `(2*atan(ellipfun("sn",${u},(${k})**2)/(1+ellipfun("cn",${u},(${k})**2))))` }),
+    source: 'DLMF 22.16.1',
+  },
+  // Glaisher's quotients (DLMF 22.2.10).
+  ...(['ns', 'nc', 'nd', 'sc', 'sd', 'cs', 'cd', 'ds', 'dc'] as const).map((id): FunctionDescription => {
+    const part = (letter: string, args: readonly Expression[]): Expression => (letter === 'n' ? number(1) : call(`jacobi${letter.toUpperCase()}n`, ...args));
+    return {
+      id: `jacobi${id.charAt(0).toUpperCase()}${id.charAt(1)}`,
+      title: `Jacobian elliptic function ${id} (argument, modulus k)`,
+      arity: 2,
+      definition: (args) => over(part(id.charAt(0), args), part(id.charAt(1), args)),
+      names: names({ latex: [`\\operatorname{${id}}`], latexForm: (a) => `\\operatorname{${id}}(${a.join(', ')})`, unicodeForm: (a) => `${id}(${a.join(', ')})`, mpmath: ([u = '', k = '']) => `ellipfun("${id}",${u},(${k})**2)` }),
+      source: 'DLMF 22.2.10',
+    };
+  }),
+  {
+    id: 'ellipticKComplementary',
+    title: "complementary complete elliptic integral K'(k)",
+    arity: 1,
+    definition: ([k = number(0)]) => call('ellipticKParameter', minus(1, sq(k))),
+    names: names({ latex: ["\\operatorname{K}'"], latexForm: ([k = '']) => `K'(${k})`, mpmath: ([k = '']) => `ellipk(1-(${k})**2)` }),
+    domain: '0 < k <= 1',
+    source: 'DLMF 19.2.9',
+  },
+  {
+    id: 'ellipticEComplementary',
+    title: "complementary complete elliptic integral E'(k)",
+    arity: 1,
+    definition: ([k = number(0)]) => call('ellipticEParameter', minus(1, sq(k))),
+    names: names({ latex: ["\\operatorname{E}'"], latexForm: ([k = '']) => `E'(${k})`, mpmath: ([k = '']) => `ellipe(1-(${k})**2)` }),
+    source: 'DLMF 19.2.9',
+  },
+  {
+    id: 'ellipticNome',
+    title: 'elliptic nome q(k)',
+    arity: 1,
+    definition: ([k = number(0)]) => call('exp', negation(over(times(pi, call('ellipticKComplementary', k)), call('ellipticK', k)))),
+    names: names({ latex: [], latexForm: ([k = '']) => `q(${k})`, mpmath: ([k = '']) => `qfrom(k=${k})` }),
+    domain: '0 < k < 1',
+    source: 'DLMF 22.2.1',
+  },
   { id: 'agm', title: 'arithmetic-geometric mean', arity: [1, 2], names: names({ latex: ['\\operatorname{agm}', '\\operatorname{M}', '\\operatorname{AGM}'], latexLetters: ['M'], latexForm: (a) => `\\operatorname{agm}(${a.join(', ')})`, mpmath: 'agm', code: { python: 'agm' } }), definition: (args) => { const [a = number(1), b = number(1)] = args.length === 1 ? [number(1), ...args] : args; return over(times(pi, a), times(2, call('ellipticKParameter', minus(1, over(sq(b), sq(a)))))); }, domain: 'positive arguments', source: 'DLMF 19.8.1' },
 ];
 

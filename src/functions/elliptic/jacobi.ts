@@ -96,3 +96,15 @@ export const jacobiValue =
     if (Q.isOne(Q.absolute(k))) return call(kind === 'sn' ? 'tanh' : 'sech', u);
     return null;
   };
+
+/** am(u, k) at 0: the integral of the series of dn (DLMF 22.16.1). */
+export const amplitudeLocal: NonNullable<FunctionDescription['local']> = (args, index, place: Place) => {
+  if (index !== 0 || place.kind !== 'finite' || !isAt(place, 0)) return null;
+  const inner = maclaurin('dn', argument(args, 1), place.offset);
+  const integrated = series(place.offset, (n) => {
+    if (n === 0) return Q.ZERO;
+    const c = inner.coefficient(n - 1);
+    return 'kind' in c ? times(Q.rational(1, n), c) : Q.divide(c, Q.rational(n));
+  });
+  return form(F1, [integrated], 'DLMF 22.16.1, 22.10.3');
+};

@@ -8,6 +8,11 @@ const pairOnly = {
   read: (args: readonly Expression[]): readonly Expression[] | null => (args.length === 2 ? args : null),
   write: (args: readonly Expression[]): readonly Expression[] | null => args,
 };
+/** (a, b, x) of a library as (x, a, b). */
+const lastFirst = {
+  read: ([a, b, x]: readonly Expression[]): readonly Expression[] | null => (a && b && x ? [x, a, b] : null),
+  write: ([x, a, b]: readonly Expression[]): readonly Expression[] | null => (a && b && x ? [a, b, x] : null),
+};
 const asTrigamma = {
   read: (args: readonly Expression[]): readonly Expression[] | null => (args.length === 1 ? [build.number(1), ...args] : null),
   write: (): null => null,
@@ -39,6 +44,19 @@ export const gammaNames = {
   lowerGamma: names({ latex: ['\\gamma'], latexForm: (a) => `\\gamma(${a.join(', ')})`, unicodeForm: (a) => `γ(${a.join(', ')})`, mpmath: ([s = '', x = '']) => `gammainc(${s},0,${x})`, code: { python: 'lowergamma' } }),
   regularizedUpperGamma: names({ latex: ['\\operatorname{Q}'], latexLetters: ['Q'], latexForm: (a) => `Q(${a.join(', ')})`, unicodeForm: (a) => `Q(${a.join(', ')})`, mpmath: ([s = '', x = '']) => `gammainc(${s},${x},regularized=True)`, code: { python: 'gammaincc', cpp: 'gamma_q' } }),
   regularizedLowerGamma: names({ latex: ['\\operatorname{P}'], latexLetters: ['P'], latexForm: (a) => `P(${a.join(', ')})`, unicodeForm: (a) => `P(${a.join(', ')})`, mpmath: ([s = '', x = '']) => `gammainc(${s},0,${x},regularized=True)`, code: { python: 'gammainc', matlab: 'gammainc', cpp: 'gamma_p' }, codeArguments: { 'matlab:gammainc': swapped } }),
+  incompleteBeta: names({ latex: ['\\operatorname{B}', '\\Beta'], latexLetters: ['B'], latexIndices: { count: 1, place: 'subscript' }, latexForm: ([x = '', ...rest]) => `\\mathrm{B}_{${x}}(${rest.join(', ')})`, unicodeForm: ([x = '', ...rest]) => `B_${x}(${rest.join(', ')})`, mpmath: ([x = '', a = '', b = '']) => `betainc(${a},${b},0,${x})` }),
+  regularizedBeta: names({
+    latex: ['\\operatorname{I}'],
+    latexLetters: ['I'],
+    latexIndices: { count: 1, place: 'subscript' },
+    latexForm: ([x = '', ...rest]) => `I_{${x}}(${rest.join(', ')})`,
+    unicodeForm: ([x = '', ...rest]) => `I_${x}(${rest.join(', ')})`,
+    plain: ['betainc'],
+    mpmath: ([x = '', a = '', b = '']) => `betainc(${a},${b},0,${x},regularized=True)`,
+    code: { python: 'betainc', matlab: 'betainc', r: 'pbeta', julia: 'beta_inc', cpp: 'ibeta' },
+    codeArguments: { 'python:betainc': lastFirst, 'cpp:ibeta': lastFirst, 'julia:beta_inc': lastFirst },
+  }),
+  generalizedHarmonic: names({ latex: ['\\operatorname{harmonic}'], latexForm: ([n = '', r = '']) => `H_{${n}}^{(${r})}`, unicodeForm: ([n = '', r = '']) => `H(${n}, ${r})`, mpmath: ([n = '', r = '']) => `(zeta(${r})-zeta(${r},(${n})+1))`, code: { matlab: 'harmonic' } }),
   barnesG: names({ latex: ['\\operatorname{G}'], latexLetters: ['G'], latexForm: (a) => `G(${raw(a, 0)})`, unicodeForm: (a) => `G(${raw(a, 0)})`, mpmath: 'barnesg', code: { python: 'barnesg' } }),
   logBarnesG: names({ latex: [], latexForm: (a) => `\\ln G(${raw(a, 0)})`, unicodeForm: (a) => `ln G(${raw(a, 0)})`, mpmath: (a) => `log(barnesg(${raw(a, 0)}))` }),
   hyperfactorial: names({ latex: ['\\operatorname{hyperfactorial}', '\\operatorname{H}'], latexForm: (a) => `\\operatorname{H}(${raw(a, 0)})`, mpmath: 'hyperfac', code: { python: 'hyperfac' } }),

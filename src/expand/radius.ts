@@ -23,7 +23,7 @@ interface Search {
 }
 
 /** The time that may be spent, so that the expansion itself is never late. */
-const MOST_MILLISECONDS = 25;
+const MOST_MILLISECONDS = 150;
 
 /** Undefined where the radius is not proven. Only for functions of one symbol without parameters, at a finite point. */
 export function radiusOf(problem: ExpansionProblem, budget: Budget): Expansion['radius'] {

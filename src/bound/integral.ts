@@ -9,7 +9,7 @@ import { type Ball, encloseReal, type Model, modelArithmetic, real } from '../ri
 import { logModelOf } from './local.ts';
 import { ballNumbers, type Numbers, type ParameterBalls } from './numbers.ts';
 import { compareReal, isExactlyZero, parameterBalls } from './region.ts';
-import { exactNear } from './singular.ts';
+import { exactNear } from './exactNear.ts';
 
 export interface IntegralValue {
   /** Decimals rounded outward. */

@@ -1,9 +1,11 @@
 /** Best-first refinement of pieces: sup |f - sum| over finite segments that do not touch the point of expansion. */
-import type { Expression } from '../expression/index.ts';
+import { type Expression, substitute } from '../expression/index.ts';
 import type { Expansion } from '../expand/index.ts';
 import { type Model, modelArithmetic } from '../rigorous/index.ts';
 import { middleModel, modelOf } from './local.ts';
+import { exactNear } from './exactNear.ts';
 import type { Numbers } from './numbers.ts';
+import { isExactlyZero } from './region.ts';
 import { supremumOfModel } from './supremum.ts';
 import type { Measure } from './types.ts';
 
@@ -14,6 +16,9 @@ export interface PieceTask<T> {
   readonly sum: Expression;
   /** Ends of the interval at which f may have a branch point. */
   readonly touches: 'lower' | 'upper' | 'none';
+  /** The exact numbers at the ends, where they are places of interest: what vanishes there can be proved to. */
+  readonly lowerPlace?: Expression;
+  readonly upperPlace?: Expression;
 }
 
 export interface Enclosed<T> {
@@ -68,14 +73,17 @@ export function refinePieces<T>(tasks: readonly PieceTask<T>[], floor: T, n: Num
   };
   /** A branch point at an end of the interval: one-sided model in the root of the distance. */
   const endBound = (task: PieceTask<T>): T | null => {
-    if (task.touches === 'none') return null;
+    const side = task.lowerPlace ? 'lower' : task.upperPlace ? 'upper' : task.touches;
+    if (side === 'none') return null;
+    const place = side === 'lower' ? task.lowerPlace : task.upperPlace;
+    const vanishes = place ? (e: Expression): boolean => isExactlyZero(substitute(e, options.variable, place), []) : undefined;
     for (const q of [1, 2, 3]) {
       const m = modelArithmetic(r, n.unitRight, options.length, true, r);
-      const end = task.touches === 'lower' ? task.x0 : task.x1;
+      const end = side === 'lower' ? task.x0 : task.x1;
       const width = r.upperEnd(r.absolute(r.subtract(task.x1, task.x0)));
       const zeros = Array.from({ length: q - 1 }, () => r.zero);
-      const leaf = m.withRange(m.polynomial([end, ...zeros, task.touches === 'lower' ? width : r.negate(width)]), r.union(task.x0, task.x1));
-      const [f, s] = [modelOf(task.expansion.function, n, m, options.variable, leaf, undefined, options.check), modelOf(task.sum, n, m, options.variable, leaf, undefined, options.check)];
+      const leaf = m.withRange(m.polynomial([end, ...zeros, side === 'lower' ? width : r.negate(width)]), r.union(task.x0, task.x1));
+      const [f, s] = [modelOf(task.expansion.function, n, m, options.variable, leaf, vanishes, options.check), modelOf(task.sum, n, m, options.variable, leaf, vanishes, options.check)];
       if (f === null || s === null) continue;
       const remainder: Model<T> = m.subtract(f, s);
       const g = options.measure === 'absolute' ? remainder : m.divide(remainder, f);
@@ -110,12 +118,42 @@ export function refinePieces<T>(tasks: readonly PieceTask<T>[], floor: T, n: Num
     const middle = r.midpoint(r.union(piece.x0, piece.x1));
     // Where f cannot be enclosed, thirty halvings have come within 1e-9 of what is in the way.
     if (piece.upper === null) undefinedPieces += 1;
+    if (piece.upper === null && undefinedPieces % 8 === 0) {
+      const sides = dividedAtPlace(piece, n);
+      if (sides !== null) {
+        const [first, ...others] = sides.map((task) => ({ ...task, upper: bound(task) }));
+        if (first) open[worst] = first;
+        open.push(...others);
+        pieces += others.length;
+        continue;
+      }
+    }
     const exhausted = pieces >= options.most || undefinedPieces > 44 || !r.isPositive(r.subtract(middle, r.lowerEnd(piece.x0))) || !r.isPositive(r.subtract(r.upperEnd(piece.x1), middle));
     if (exhausted) return piece.upper === null ? { upper: null, lower, pieces, trouble: piece } : { upper: piece.upper, lower, pieces };
-    const left: PieceTask<T> = { ...piece, x1: middle, touches: piece.touches === 'upper' ? 'none' : piece.touches };
-    const right: PieceTask<T> = { ...piece, x0: middle, touches: piece.touches === 'lower' ? 'none' : piece.touches };
+    const left: PieceTask<T> = { ...piece, x1: middle, upperPlace: undefined, touches: piece.touches === 'upper' ? 'none' : piece.touches };
+    const right: PieceTask<T> = { ...piece, x0: middle, lowerPlace: undefined, touches: piece.touches === 'lower' ? 'none' : piece.touches };
     open[worst] = { ...left, upper: bound(left) };
     open.push({ ...right, upper: bound(right) });
     pieces += 1;
   }
+}
+
+/** The piece cut at an exact number inside it, the simplest of the usual shapes: a removable singularity then is an end. Null where that is done already. */
+function dividedAtPlace<T>(piece: PieceTask<T>, n: Numbers<T>): readonly PieceTask<T>[] | null {
+  const { r } = n;
+  const [a, b] = [r.toDouble(piece.x0), r.toDouble(piece.x1)];
+  if (piece.lowerPlace && piece.upperPlace) return null;
+  for (const place of exactNear((a + b) / 2, (b - a) * 0.5 * (1 + 1e-12))) {
+    const p = n.value(place);
+    if (p === null) continue;
+    const [above, below] = [r.subtract(p, piece.x0), r.subtract(piece.x1, p)];
+    if (r.isNegative(above) || r.isNegative(below)) continue;
+    const known = r.isZero(above) ? piece.lowerPlace : r.isZero(below) ? piece.upperPlace : undefined;
+    if (known) continue;
+    const parts: PieceTask<T>[] = [];
+    if (!r.isZero(above)) parts.push({ ...piece, x1: p, upperPlace: place, touches: piece.touches === 'upper' ? 'none' : piece.touches });
+    if (!r.isZero(below)) parts.push({ ...piece, x0: p, lowerPlace: place, touches: piece.touches === 'lower' ? 'none' : piece.touches });
+    return parts;
+  }
+  return null;
 }

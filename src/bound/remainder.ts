@@ -2,7 +2,8 @@
 import { build, type Expression, freeSymbols, Q, type Rational } from '../expression/index.ts';
 import type { Expansion } from '../expand/index.ts';
 import { Declined } from '../outcome.ts';
-import { type Ball, type LogModel, logRange, type Model, real } from '../rigorous/index.ts';
+import { describe } from '../functions/index.ts';
+import { type Ball, enclose, type LogModel, logRange, type Model, real } from '../rigorous/index.ts';
 import { scaleOut } from './homogeneous.ts';
 import { denominatorOf, type Local, localModel, logModelOf, remainderAtPoint, sumOf } from './local.ts';
 import { ballNumbers, doubles, type Numbers, type ParameterBalls } from './numbers.ts';
@@ -61,6 +62,7 @@ export function bound(problem: BoundProblem, cache: ModelCache = new Map(), leng
     best = { ...next, upper, lower };
   };
   const check = (): void => budget.check();
+  requireReal(segments, variable, parameters);
   const settled = (result: Result | null): boolean => result !== null && (result.unbounded === true || (result.upper !== null && ratioOf(result) <= SETTLED));
   const memory = { cache, lengthHint };
   improve(run(doubles(parameters), segments, problem, variable, check, memory));
@@ -78,6 +80,22 @@ export function bound(problem: BoundProblem, cache: ModelCache = new Map(), leng
   }
   if (parameters.size > 0 && !settled(best)) best = overParameters(parameters, best, (box) => run(doubles(box), segments, problem, variable, check, { cache: new Map(), lengthHint }));
   return answer(best);
+}
+
+/** Refuses at once what is not real at an end or in the middle of the interval. */
+function requireReal(segments: readonly Segment[], variable: string, parameters: ParameterBalls): void {
+  const n = ballNumbers(80, parameters);
+  for (const segment of segments) {
+    const ends = [segment.lower, segment.upper].map((end) => (end === null ? null : n.value(end)));
+    const [a, b] = ends;
+    const inner = a && b ? [1, 3, 5, 7].map((k) => real.add(a, real.multiply(real.subtract(b, a, 80), { mid: BigInt(k), rad: 0n, exp: -3 }, 80), 80)) : [];
+    for (const x of [...ends, ...inner]) {
+      if (!x || n.value(segment.expansion.function, new Map([[variable, x]])) !== null) continue;
+      const environment = new Map([...parameters, [variable, x] as const].map(([name, ball]) => [name, { re: ball, im: real.ZERO }] as const));
+      const value = enclose(segment.expansion.function, environment, 80, describe);
+      if (value !== null && !real.containsZero(value.im)) throw new Declined('bad-request', `The function is not real at ${variable} = ${real.toDecimalDown(x, 6)}; choose an interval on which it is real.`);
+    }
+  }
 }
 
 const MOST_BOXES = 40;

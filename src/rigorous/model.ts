@@ -209,7 +209,8 @@ export function modelArithmetic<T>(a: Arithmetic<T>, domain: T, length: number, 
   const flat = (f: M): M | null => {
     if (real === null || !oneSided || f.valuation >= 0 || !real.isNegative(f.range)) return null;
     const k = -f.valuation;
-    const m = Math.ceil(length / k) + 1;
+    // m!/y^m is least near m = y; at the far end of the domain that is nearly e^-y itself.
+    const m = Math.max(Math.ceil(length / k) + 1, Math.min(600, Math.floor(real.toDouble(real.lowerEnd(real.negate(f.range))))));
     let factor: T | null = one;
     for (let j = 1; j <= m && factor !== null; j += 1) factor = a.divide(times(factor, a.fromInteger(j)), a.negate(f.range));
     if (factor === null) return null;

@@ -1,5 +1,5 @@
 /** Claims in a chain of relations: which side is the function, which the printed expansion. */
-import { children, type Expression, type Relation, type RelationNode, type Span, walk } from '../expression/index.ts';
+import { children, freeSymbols, type Expression, type Relation, type RelationNode, type Span, walk } from '../expression/index.ts';
 import { isBareName } from '../read/index.ts';
 import { hasFactorDots, hasMarks } from './truncated.ts';
 
@@ -21,7 +21,14 @@ const COMPARING: ReadonlySet<Relation> = new Set<Relation>(['=', 'about', 'tilde
 /** Every pair of the chain in which one side could be a truncated expansion of the other. Sides that an inequality leads to are left out. */
 export function claimsOf(chain: RelationNode): readonly Claim[] {
   const { sides, relations } = chain;
-  const exact = sides.find((s) => !isBareName(s) && !hasMarks(s)) ?? null;
+  const exacts = sides.filter((s) => !isBareName(s) && !hasMarks(s));
+  /** The side of which the printed one can be an expansion: it speaks of the same symbols, and is known. */
+  const exactFor = (side: Expression): Expression | null => {
+    const names = freeSymbols(side);
+    const shares = (s: Expression): boolean => s === side || freeSymbols(s).some((n) => names.includes(n));
+    const known = (s: Expression): boolean => ![...walk(s)].some((n) => n.kind === 'apply');
+    return exacts.find((s) => shares(s) && known(s)) ?? exacts.find(shares) ?? exacts[0] ?? null;
+  };
   const out: Claim[] = [];
   const spanOf = (from: Expression, to: Expression): Span => ({ start: Math.min(from.span?.start ?? chain.span?.start ?? 0, to.span?.start ?? 0), end: Math.max(from.span?.end ?? 0, to.span?.end ?? chain.span?.end ?? 0) });
   relations.forEach((relation, i) => {
@@ -38,6 +45,7 @@ export function claimsOf(chain: RelationNode): readonly Claim[] {
       out.push({ function: right, name: null, side: left, relation, span: spanOf(left, right), neighbour: null });
       return;
     }
+    const exact = exactFor(right);
     const f = exact && exact !== right && sides.indexOf(exact) <= i ? exact : isBareName(left) || (hasMarks(left) && hasMarks(right) && i > 0) ? null : left;
     const name = f ? null : (sides.slice(0, i + 1).find(isBareName) ?? null);
     if (!f && !name) return;

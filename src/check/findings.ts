@@ -23,6 +23,13 @@ export interface Place {
   readonly around: Around;
 }
 
+export interface FindingOptions {
+  /** The function is only presumed (what it is taken as, in words): nothing fails. */
+  readonly lenient?: string;
+  /** The function is what a name stands for elsewhere in the document: a claim fails only if its terms show that this is meant. */
+  readonly resolved?: boolean;
+}
+
 /** Judged in one setting. */
 interface Tried {
   readonly choice: Choice;
@@ -33,7 +40,7 @@ interface Tried {
  * The finding for one claim with its function known; null where it turns out not to be a claim (an identity, an equation to solve).
  * `lenient`: the function is only presumed, so that nothing fails.
  */
-export function findingOf(printed: Claim, given: Expression, asked: Asked, place: Place, options: { readonly lenient?: string } = {}): readonly Finding[] {
+export function findingOf(printed: Claim, given: Expression, asked: Asked, place: Place, options: FindingOptions = {}): readonly Finding[] {
   const main = mainFinding(printed, given, asked, place, options);
   if (!main) return options.lenient === undefined ? fittedFinding(printed, given, asked, place) : [];
   const accuracy = main.setting && options.lenient === undefined ? accuracyFinding(printed, given, main.setting, place) : null;
@@ -60,13 +67,14 @@ interface Main {
   readonly fitted: boolean;
 }
 
-function mainFinding(printed: Claim, given: Expression, asked: Asked, place: Place, options: { readonly lenient?: string }): Main | null {
+function mainFinding(printed: Claim, given: Expression, asked: Asked, place: Place, options: FindingOptions): Main | null {
   const only = (finding: Finding | null): Main | null => finding && { finding, setting: null, fitted: false };
   const settled = (finding: Finding | null, setting: Setting, side: Expression): Main | null => finding && { finding, setting, fitted: !hasMarks(side) && hasDecimals(side) };
   const all = settingsFor(given, printed.side, asked, place.around);
   // Where the function does not hold the quantity in which the printed side runs, one of the two names it differently.
-  const choices = all.filter((c) => dependsOn(given, c.setting.variable) || mentionsFunction(given));
+  const choices = all.filter((c) => dependsOn(given, c.setting.variable) || isGridLike(given) || movesFunction(printed.side, c.setting.variable));
   if (choices.length === 0) return all.length > 0 && hasMarks(printed.side) ? only(undecided(printed, place, `The function does not hold ${all[0]?.setting.variable ?? 'the variable'}, in which the printed side runs.`)) : null;
+  if (isPlainEquation(printed) && choices.some((c) => unknownSymbols(given, printed.side, c.setting).length > 0)) return null;
   const tried: Tried[] = [];
   for (const choice of choices) {
     const { f, claim } = prepared(given, printed, choice.setting);
@@ -93,13 +101,20 @@ function mainFinding(printed: Claim, given: Expression, asked: Asked, place: Pla
   if (best.judgement.kind !== 'fails') return null;
   if (!isHeldAgainst(claim, f, best, tried.length > 1, place)) return meant(claim, f, best.choice.setting) && hasMarks(claim.side) ? only(undecided(claim, place, 'It is not plain in which quantity, and where, this is an expansion; say so with a note such as leading-order: small x.')) : null;
   if (!best.choice.certain && (mentionsFunction(f) || mentionsFunction(claim.side))) return only(undecided(claim, place, 'In which quantity this is an expansion is not plain; say so with a note such as leading-order: small h.'));
+  if (options.resolved === true && best.judgement.failure.matched === 0 && !isNearlyTrue(given, printed, best, place)) return only(undecided(claim, place, 'The definition of the left side that stands in this document does not belong to this claim, or the claim is wrong from its first term.'));
   const unknown = unknownSymbols(f, claim.side, best.choice.setting);
   if (unknown.length > 0) {
     const meaning = withConstants(f, claim, unknown, best.choice.setting);
     if (meaning?.judgement.kind === 'holds') return settled(holding(meaning.claim, f, best.choice.setting, meaning.judgement, place, options.lenient), best.choice.setting, meaning.claim.side);
     if (meaning?.judgement.kind === 'undecided') return only(undecided(claim, place, meaning.judgement.reason));
-    if (meaning?.judgement.kind === 'fails' && options.lenient === undefined && !blamesUnknown(meaning.judgement, meaning.left, best.choice.setting)) return only(failing(meaning.claim, f, best.choice.setting, meaning.judgement, place));
-    if (blamesUnknown(best.judgement, unknown, best.choice.setting)) return only(undecided(claim, place, `What ${unknown.join(', ')} stands for is not said in this document.`));
+    if (meaning?.judgement.kind === 'fails' && options.lenient === undefined && meaning.left.length === 0) return only(failing(meaning.claim, f, best.choice.setting, meaning.judgement, place));
+    return only(undecided(claim, place, `What ${unknown.join(', ')} stands for is not said in this document.`));
+  }
+  const imaginary = options.lenient === undefined ? withImaginaryUnit(f, claim) : null;
+  if (imaginary) {
+    const again = judge(imaginary.f, imaginary.claim.side, claim.relation, best.choice.setting);
+    if (again.kind === 'holds') return settled(holding(imaginary.claim, imaginary.f, best.choice.setting, again, place, undefined), best.choice.setting, claim.side);
+    return only(undecided(claim, place, 'Whether a letter here is the imaginary unit is not plain.'));
   }
   if (options.lenient !== undefined) return only(undecided(claim, place, `Taken as ${options.lenient} the claim does not hold; its definition does not stand in this document.`));
   return settled(failing(claim, f, best.choice.setting, best.judgement, place), best.choice.setting, claim.side);
@@ -160,6 +175,12 @@ function unknownSymbols(f: Expression, side: Expression, setting: Setting): read
   return freeSymbols(withoutMarks(side)).filter((name) => name !== setting.variable && !dependsOn(f, name));
 }
 
+/** i or j read as a symbol on both sides may be the imaginary unit. */
+function withImaginaryUnit(f: Expression, claim: Claim): { readonly f: Expression; readonly claim: Claim } | null {
+  const name = ['j', 'i'].find((n) => dependsOn(f, n) && dependsOn(claim.side, n));
+  return name === undefined ? null : { f: named(f, name, build.constant('i')), claim: { ...claim, side: named(claim.side, name, build.constant('i')) } };
+}
+
 /** Letters by which the trade names constants. */
 const CONSTANT_LETTERS: Readonly<Record<string, readonly Expression[]>> = {
   '\\gamma': [build.constant('eulerGamma')],
@@ -200,17 +221,12 @@ function named(e: Expression, name: string, value: Expression): Expression {
   return e.kind === 'symbol' && e.name === name ? { ...value, ...(e.span ? { span: e.span } : {}) } : mapChildren(e, (c) => named(c, name, value));
 }
 
-/** The first wrong term holds a symbol whose meaning is not known. */
-function blamesUnknown(judgement: Extract<Judgement, { kind: 'fails' }>, unknown: readonly string[], setting: Setting): boolean {
-  const { difference } = judgement.failure;
-  if (!difference) return unknown.length > 0;
-  return judgement.truncated.terms.some((t) => {
-    if (!unknown.some((name) => dependsOn(t.value, name))) return false;
-    const size = leading(setting, t.value);
-    return size.kind !== 'monomial' || compareSizes(size.size, difference.size) <= 0;
-  });
-}
+/** An equation without any mark of an expansion. */
+const isPlainEquation = (c: Claim): boolean => c.relation === '=' && !hasMarks(c.side);
 
+const isGridLike = (e: Expression): boolean => e.kind === 'symbol' && isGridName(e);
+/** The printed side holds f(x + h) with the variable inside. */
+const movesFunction = (side: Expression, variable: string): boolean => [...walk(side)].some((n) => n.kind === 'apply' && n.args.some((a) => dependsOn(a, variable)));
 const mentionsFunction = (e: Expression): boolean => [...walk(e)].some((n) => n.kind === 'apply' || (n.kind === 'symbol' && isGridName(n)));
 
 function isNearlyTrue(given: Expression, printed: Claim, tried: Tried, place: Place): boolean {

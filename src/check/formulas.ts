@@ -86,6 +86,9 @@ function commentFormulas(text: string, region: Region): readonly Place[] {
 
 const RELATION = /~=|≈|∼|≃|(?<![<>=!:+\-*/])=(?!=)|\\approx|\\sim(?:eq)?(?![a-z])|(?<=\s)~(?=\s)/;
 
+/** Running text that goes on behind a formula. */
+const WORDS_AFTER = /\s(?:for|when|where|if|with|near|around|which|so|and|using|gives?|since|because|valid|while|to avoid)\s/;
+
 /** In each line with a relation, the longest stretch that is a formula. */
 function proseFormulas(text: string, from: number, to: number): readonly Place[] {
   const out: Place[] = [];
@@ -106,10 +109,14 @@ function formulaInLine(text: string, start: number, end: number): Place | null {
   const notation = line.includes('\\') ? 'latex' : 'plain';
   const lead = /^[\s*/!#%;>]*(?:-\s+)?/.exec(line)?.[0].length ?? 0;
   const starts = [lead, ...[...line.slice(lead, relation.index).matchAll(/[:;,]\s+|\s+|(?<=\w)\(/g)].map((m) => lead + m.index + m[0].length)];
-  for (const at of new Set(starts)) {
-    if (at >= relation.index) continue;
-    const outcome = readFormula(text, notation, { start: start + at, end });
-    if (outcome.ok && outcome.value.expression.kind === 'relation' && !isWordy(outcome.value.expression, text)) return { start: start + at, end, notation };
+  const words = WORDS_AFTER.exec(line.slice(relation.index));
+  const ends = words ? [start + relation.index + words.index, end] : [end];
+  for (const to of ends) {
+    for (const at of new Set(starts)) {
+      if (at >= relation.index) continue;
+      const outcome = readFormula(text, notation, { start: start + at, end: to });
+      if (outcome.ok && outcome.value.expression.kind === 'relation' && !isWordy(outcome.value.expression, text)) return { start: start + at, end: to, notation };
+    }
   }
   return null;
 }

@@ -28,7 +28,7 @@ export interface General {
 
 export function generalIn(f: Expression, side: Expression, setting: Setting): General | null {
   const sum = [...walk(side)].find((n): n is IndexedNode => n.kind === 'indexedSum');
-  if (sum) return sum.index.kind === 'symbol' ? { node: sum, index: sum.index.name, sum } : null;
+  if (sum) return sum.index.kind === 'symbol' && isIndex(sum.body, sum.index.name, setting.variable) ? { node: sum, index: sum.index.name, sum } : null;
   if (![...walk(side)].some((n) => n.kind === 'dots')) return null;
   for (const term of printedTerms(side, setting)) {
     const index = freeSymbols(term.node).find((name) => name !== setting.variable && !dependsOn(f, name) && isIndex(term.node, name, setting.variable));

@@ -1,5 +1,5 @@
 /** The door of check/: claims in a document or a single formula, judged. */
-import { build, children, walk, type Assumption, type Expression, type RelationNode } from '../expression/index.ts';
+import { build, children, sameExpression, walk, type Assumption, type Expression, type RelationNode } from '../expression/index.ts';
 import { attempt, type Budget, Declined, type Outcome } from '../outcome.ts';
 import type { Finding } from '../protocol.ts';
 import { type MacroTable, readExact, readExpression, readNotes, readVariable, settingsAt } from '../read/index.ts';
@@ -87,7 +87,8 @@ function checkClaim(claim: Claim, given: Expression | null, definitions: Definit
   if (speaksOfItself(own, claim.side)) return findingOf(claim, own, asked, place);
   let failed: readonly Finding[] = [];
   for (const value of resolve(definitions, own, place.formula.span.start)) {
-    const found = findingOf(claim, value, asked, place);
+    if (sameExpression(value, claim.side)) continue;
+    const found = findingOf(claim, value, asked, place, { resolved: true });
     if (found[0]?.verdict === 'holds') return found;
     if (failed.length === 0) failed = found;
   }

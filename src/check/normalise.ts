@@ -9,6 +9,8 @@ export function normalise(f: Expression, side: Expression, variable: string | nu
   const turn = (e: Expression): Expression => {
     const parts = realParts(e);
     if (parts) return turn(parts);
+    const written = binomialOf(e);
+    if (written) return turn(written);
     if (e.kind === 'symbol') return functionOf(e.name, bases) ?? (grid && variable !== null ? (gridValue(e.name, variable) ?? e) : e);
     if (e.kind === 'apply' && e.args.length === 0) {
       const base = bases.get(e.name);
@@ -81,6 +83,16 @@ function realParts(e: Expression): Expression | null {
   const conjugate = (n: Expression): Expression => (n.kind === 'constant' && n.name === 'i' ? build.negation(n) : mapChildren(n, conjugate));
   const other = conjugate(inner);
   return /^(?:re|Re|realPart)$/.test(e.function) ? build.quotient(build.sum(inner, other), build.number(2)) : build.quotient(build.difference(inner, other), build.product(build.number(2), build.constant('i')));
+}
+
+/** A binomial coefficient with a small whole lower index as a product over a factorial, so that it can be compared with one. */
+function binomialOf(e: Expression): Expression | null {
+  if (e.kind !== 'call' || e.function !== 'binomial') return null;
+  const [n, k] = e.args;
+  if (!n || n.kind === 'number' || k?.kind !== 'number' || k.value.den !== 1n || k.value.num < 0n || k.value.num > 12n) return null;
+  const count = Number(k.value.num);
+  const factors = Array.from({ length: count }, (_, j) => (j === 0 ? n : build.difference(n, build.number(j))));
+  return { ...build.quotient(build.product(...factors), build.call('factorial', k)), ...(e.span ? { span: e.span } : {}) };
 }
 
 /** A grid value as a function, where the claim's own name is one. */

@@ -1,5 +1,5 @@
 /** In which quantity, and at which point, a claim is an expansion: from the request, from marks and words around, else from its own powers. */
-import { build, dependsOn, freeSymbols, Q, walk, type Assumption, type Expression } from '../expression/index.ts';
+import { build, dependsOn, freeSymbols, Q, sameExpression, walk, type Assumption, type Expression } from '../expression/index.ts';
 import type { Budget } from '../outcome.ts';
 import { candidates } from '../read/index.ts';
 import type { Setting } from './context.ts';
@@ -39,8 +39,8 @@ export function settingsFor(f: Expression, side: Expression, asked: Asked, aroun
   const foundName = found ? carrier(found.variable.expression, f, side) : null;
   // x/log^3 x falls at 0 and rises at infinity: such an O-term names the quantity, not the point.
   const logarithmic = orders.some((o) => [...walk(o)].some((n) => n.kind === 'call'));
-  const certain = found !== null && found.from !== 'only symbol' && found.from !== 'only ratio' && !(found.from === 'order term' && logarithmic);
-  const foundPoint = found ? (found.point.kind === 'constant' && found.point.name === 'infinity' ? 'inf' : found.point) : null;
+  const certain = found !== null && found.from !== 'only symbol' && found.from !== 'only ratio' && found.from !== 'text' && !(found.from === 'order term' && logarithmic);
+  const foundPoint: Expression | 'inf' | null = found ? (found.point.kind === 'constant' && found.point.name === 'infinity' ? 'inf' : found.point) : null;
   if (named !== null) {
     if (asked.point) return [make(named, asked.point, true)];
     if (foundName === named && foundPoint && certain) return [make(named, foundPoint, true)];
@@ -54,7 +54,13 @@ export function settingsFor(f: Expression, side: Expression, asked: Asked, aroun
     return [make(foundName, point, true), ...(point === 'inf' && !asked.point ? [make(foundName, '-inf', false)] : [])];
   }
   const names = foundName !== null ? [foundName] : likelyVariables(f, side);
-  return names.flatMap((name) => (asked.point ? [make(name, asked.point, true)] : pointsFor(side, name).map((p) => make(name, p, false))));
+  return names.flatMap((name) => {
+    if (asked.point) return [make(name, asked.point, true)];
+    // What running text says nearby may belong to another formula: it is tried first.
+    const said: readonly (Expression | 'inf')[] = found?.from === 'text' && foundPoint ? [foundPoint] : [];
+    const others = pointsFor(side, name).filter((p) => !said.some((q) => q === p || (typeof p === 'object' && typeof q === 'object' && sameExpression(p, q))));
+    return [...said, ...others].map((p) => make(name, p, false));
+  });
 }
 
 /** Symbols of O-terms outside the arguments of functions: O(h^2 f'(x)) speaks of h. */

@@ -129,7 +129,10 @@ function turnsAcrossCut(c: Context, front: Multi, rest: Stream): 0 | -1 {
   const lead = monomialOf(c, front);
   if (!lead || isRational(lead.constant) ? !lead || (lead.constant as { num: bigint }).num >= 0n : c.field.isReal(lead.constant) !== 'yes' || c.field.sign(lead.constant) !== -1) return 0;
   if (front instanceof Series && !isRealMulti(c, front)) throw new Declined('undecided', 'The branch of a power or logarithm near its cut could not be decided; choose a side or simplify the argument.');
-  return signOfImaginary(c, rest, 40) === 1 ? -1 : 0;
+  const sign = signOfImaginary(c, rest, 40);
+  // The two sides of the point lie on different sides of the cut.
+  if (sign !== 0) c.notes.sided = true;
+  return sign === 1 ? -1 : 0;
 }
 
 /** Sign of the imaginary part of the first term that is not real; 0 where none of the first terms is. */

@@ -1,5 +1,5 @@
 /** What an expand request asks, as exact data: function, variable, point, side, assumptions. */
-import type { Assumption, Expression } from '../expression/index.ts';
+import type { Assumption, Expression, LimitNode } from '../expression/index.ts';
 import { failure, type Outcome, success } from '../outcome.ts';
 import type { ExpandRequest, Side } from '../protocol.ts';
 import { principalSide, readExact } from '../read/index.ts';
@@ -76,8 +76,21 @@ function listed(names: readonly string[]): string {
   return shown.length === 0 ? last : `${shown.join(', ')} or ${last}`;
 }
 
+/** A limit is the leading term at its target: `0^+` and `0^-` tell the side. */
+function limitQuestion(request: ExpandRequest, limit: LimitNode): Outcome<Question> {
+  const assumptions = readAllAssumptions(request.assume);
+  if (!assumptions.ok) return assumptions;
+  const { target } = limit;
+  const mark = target.kind === 'power' && target.exponent.kind === 'symbol' ? target.exponent.name : null;
+  const sided = target.kind === 'power' && (mark === '+' || mark === '-') ? target.base : target;
+  const side = mark === '+' ? 'right' : mark === '-' ? 'left' : (request.side ?? 'both');
+  return success({ function: limit.body, variable: limit.variable, point: pointOf(sided), side, assumptions: assumptions.value, stated: [] });
+}
+
 export function questionOf(request: ExpandRequest, source: SourceFormula): Outcome<Question> {
-  const target = functionOf(source.expression);
+  const written = functionOf(source.expression);
+  if (written.kind === 'limit' && request.variable === undefined) return limitQuestion(request, written);
+  const target = written;
   const variable = variableOf(request, target, source);
   if (!variable.ok) return variable;
   const assumptions = readAllAssumptions(request.assume);

@@ -2,7 +2,7 @@
 import type { Expression } from '../expression/index.ts';
 import { failure, type Outcome, success } from '../outcome.ts';
 import type { ExpandRequest } from '../protocol.ts';
-import { type Candidate, candidates, codeLanguage, type CodeReading, locate, orderTerms, readFormula, readVariable, type Surroundings } from '../read/index.ts';
+import { type Candidate, candidates, codeLanguage, type CodeReading, isTruncated, locate, orderTerms, readFormula, readVariable, type Surroundings } from '../read/index.ts';
 import type { EngineTools } from './resources.ts';
 
 export interface SourceFormula {
@@ -38,6 +38,8 @@ export async function sourceFormula(request: SourceRequest, tools: EngineTools):
   return selection ? placeInDocument(request, selection, tools) : wholeFormula(request);
 }
 
+const truncatedSides = (formula: Expression): readonly Expression[] => (formula.kind === 'relation' ? formula.sides.filter(isTruncated) : []);
+
 /** Names of the request that the reader must take as quantities. */
 const namedSymbols = ({ variable, unknown }: SourceRequest): string[] => [variable, unknown].filter((s): s is string => s !== undefined && /^\\?[A-Za-z]+\w*$/.test(s));
 
@@ -66,7 +68,7 @@ function placeInDocument(request: SourceRequest, selection: { readonly start: nu
     expression,
     conditions: context.conditions,
     ...(context.unknown === null ? {} : { unknown: context.unknown }),
-    surroundings: { orders: context.orders, conditions: context.conditions, before: context.before, after: context.after },
+    surroundings: { orders: context.orders, conditions: context.conditions, expansions: truncatedSides(context.formula), before: context.before, after: context.after },
     readSymbol: symbolReader(found.value.language, tools),
     start,
     end,
@@ -84,7 +86,7 @@ function wholeFormula(request: SourceRequest): Outcome<SourceFormula> {
     expression,
     conditions,
     ...(unknown === undefined ? {} : { unknown }),
-    surroundings: { orders: orderTerms(expression), conditions },
+    surroundings: { orders: orderTerms(expression), conditions, expansions: truncatedSides(expression) },
     readSymbol: (name) => readVariable(name),
     start: expression.span?.start ?? 0,
     end: expression.span?.end ?? text.length,

@@ -3,6 +3,7 @@ import * as vscode from 'vscode';
 import type { CheckAnswer, Finding } from '../protocol.ts';
 import type { NoteReading } from '../worker/desk/types.ts';
 import { rangeOf } from './edits.ts';
+import { checkImplementations } from './implementations.ts';
 import { engineLanguage, serves } from './languages.ts';
 import type { Services } from './services.ts';
 import { type Settings, settingsFor } from './settings.ts';
@@ -56,16 +57,19 @@ export class Problems implements vscode.Disposable {
       this.#services.client.ask<CheckAnswer>({ ask: 'check', text, language, budget_ms: Math.max(settings.budget, 20_000) }, abort.signal),
     );
     const notes = abort.signal.aborted ? null : await this.#services.client.consult({ desk: 'notes', text, language }, abort.signal);
+    const read = notes && 'notes' in notes ? notes.notes : [];
+    const against = abort.signal.aborted ? [] : await checkImplementations(this.#services, document, read, abort.signal);
     if (this.#running.get(key) === abort) this.#running.delete(key);
     if (abort.signal.aborted || document.isClosed || document.version !== version) return null;
-    const unreadable = notes && 'notes' in notes ? notes.notes.filter((note) => note.problem !== null) : [];
+    const unreadable = read.filter((note) => note.problem !== null);
+    const others = [...unreadable.map((note) => noteProblem(document, note)), ...against];
     if (!answer.ok) {
       this.#services.log.info(`check of ${document.uri.path}: ${answer.error.message}`);
-      this.#collection.set(document.uri, unreadable.map((note) => noteProblem(document, note)));
+      this.#collection.set(document.uri, others);
       return null;
     }
     this.#checked.set(key, { version, findings: answer.findings });
-    this.#collection.set(document.uri, [...answer.findings.flatMap((finding) => claimProblem(document, finding, settings)), ...unreadable.map((note) => noteProblem(document, note))]);
+    this.#collection.set(document.uri, [...answer.findings.flatMap((finding) => claimProblem(document, finding, settings)), ...others]);
     this.#services.status.count(document.uri, countsOf(answer));
     return answer;
   }

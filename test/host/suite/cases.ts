@@ -240,6 +240,20 @@ export const cases: Readonly<Record<string, () => Promise<void>>> = {
     check(texts.includes('eq:length'), `links: ${texts.join(', ')}`);
   },
 
+  'a polynomial is held against the equation it implements': async () => {
+    const wrong = await open('c', '// leading-order: implements eq:length\ndouble f(double u)\n{\n    // leading-order: implements eq:length\n    return 1.0 + u * u / 6.0 + u * u * u * u / 110.0;\n}\n');
+    const problem = await until('a problem', () => vscode.languages.getDiagnostics(wrong.document.uri).find((d) => d.code === 'fails'));
+    check(problem.message.includes('eq:length'), problem.message);
+    const right = await open('c', 'double f(double u)\n{\n    // leading-order: implements eq:length\n    return 1.0 + u * u / 6.0 + u * u * u * u / 120.0;\n}\n');
+    await vscode.commands.executeCommand('leadingOrder.checkDocument');
+    await vscode.commands.executeCommand('workbench.action.closeQuickOpen');
+    same(
+      vscode.languages.getDiagnostics(right.document.uri).map((d) => d.message),
+      [],
+      'problems of the right one',
+    );
+  },
+
   'the hover can be text alone or switched off': async () => {
     const configuration = vscode.workspace.getConfiguration('leadingOrder');
     const editor = await open('latex', LATEX);

@@ -23,14 +23,14 @@ interface Search {
 }
 
 /** The time that may be spent, so that the expansion itself is never late. */
-const MOST_MILLISECONDS = 150;
+const MOST_MILLISECONDS = 1000;
 
 /** Undefined where the radius is not proven. Only for functions of one symbol without parameters, at a finite point. */
 export function radiusOf(problem: ExpansionProblem, budget: Budget): Expansion['radius'] {
   const { point, variable } = problem;
   if (point === 'inf' || point === '-inf' || variable.kind !== 'symbol') return undefined;
   try {
-    const own = newBudget(Math.min(MOST_MILLISECONDS, Math.max(0, budget.remaining())));
+    const own = newBudget(Math.min(MOST_MILLISECONDS, Math.max(0, budget.remaining() / 2)));
     const side = openSide({ variable: build.symbol("z'"), point: build.number(0), assumptions: problem.assumptions }, 'right', own);
     const c = side.context;
     const search: Search = { c, x: variable.name, polynomial: (e) => polynomialOf(c, e, variable.name, own) };

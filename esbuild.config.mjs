@@ -62,7 +62,7 @@ const bundles = [
 ];
 
 /** Which font faces of the typesetter the hover picture can need. */
-const PICTURE_FACES = /^KaTeX_(Main|Math|Size\d|AMS|Caligraphic|Fraktur|SansSerif|Script|Typewriter)-(Regular|Italic|Bold|BoldItalic)\.ttf$/;
+const PICTURE_FACES = /^KaTeX_(Main-(Regular|Italic|Bold)|Math-(Italic|BoldItalic)|Size[1-4]-Regular|(AMS|Caligraphic|Fraktur|SansSerif|Script|Typewriter)-Regular)\.ttf$/;
 
 async function copyMatching(from, to, filter) {
   await mkdir(to, { recursive: true });

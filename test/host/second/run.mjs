@@ -23,7 +23,7 @@ if (problem) {
 const run = (...args) => spawnSync(process.execPath, args, { cwd: ROOT, stdio: ['ignore', 'ignore', 'inherit'] }).status === 0;
 mkdirSync(CACHE, { recursive: true });
 const vsix = path.join(CACHE, 'leading-order.vsix');
-if (!run('esbuild.config.mjs', '--tests') || !run('node_modules/@vscode/vsce/vsce', 'package', '--no-dependencies', '--allow-missing-repository', '--allow-unused-files-pattern', '-o', vsix)) {
+if (!run('esbuild.config.mjs', '--tests') || !run('node_modules/@vscode/vsce/vsce', 'package', '--no-dependencies', '--allow-missing-repository', '--no-rewrite-relative-links', '-o', vsix)) {
   tally.fail('building and packaging');
   tally.close();
 }

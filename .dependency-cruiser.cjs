@@ -8,10 +8,11 @@ const ROOMS = {
   expand: ['expression', 'rigorous', 'functions', 'algebra', 'series'],
   bound: ['expression', 'rigorous', 'functions', 'algebra', 'series', 'expand'],
   fit: ['expression', 'rigorous', 'functions', 'algebra', 'series', 'expand', 'bound', 'write'],
+  guard: ['expression', 'rigorous', 'functions', 'algebra', 'series', 'expand', 'bound', 'fit', 'write'],
   read: ['expression', 'functions'],
   write: ['expression', 'functions', 'expand'],
   check: ['expression', 'rigorous', 'functions', 'algebra', 'series', 'expand', 'bound', 'read', 'write'],
-  engine: ['expression', 'rigorous', 'functions', 'algebra', 'series', 'expand', 'bound', 'fit', 'read', 'write', 'check'],
+  engine: ['expression', 'rigorous', 'functions', 'algebra', 'series', 'expand', 'bound', 'fit', 'guard', 'read', 'write', 'check'],
 };
 const anywhere = '^src/(protocol|outcome)\\.ts$';
 module.exports = {

@@ -75,6 +75,8 @@ export interface GuardRequest extends CommonRequest {
   readonly tolerance?: number | string;
   /** Assumed error of each library call in ulp; default 1. */
   readonly library?: number;
+  /** Also a guarded form of the derivative, with the same switch where that serves it. */
+  readonly derivative?: boolean;
 }
 
 export interface CheckRequest extends CommonRequest {
@@ -270,7 +272,8 @@ export interface FitAnswer {
 export interface GuardAnswer {
   readonly id?: string | number;
   readonly ok: true;
-  readonly forms: readonly { readonly text: string; readonly bound: string }[];
+  /** Exact forms in order of proven bound; `identities` name the steps that made each of them. */
+  readonly forms: readonly { readonly text: string; readonly bound: string; readonly identities?: readonly string[] }[];
   readonly ranges: readonly { readonly from: string; readonly to: string; readonly form: string; readonly bound: string }[];
   readonly switch: string | null;
   readonly terms: number | null;
@@ -279,6 +282,11 @@ export interface GuardAnswer {
   /** The lines that the code needs at the head of its file. */
   readonly imports?: readonly string[];
   readonly assumptions: readonly string[];
+  /** The interval that the bounds hold on, given or proposed, and the format. */
+  readonly interval?: readonly [string, string];
+  readonly format?: string;
+  /** The derivative's own guard, where it was asked for. */
+  readonly derivative?: GuardAnswer;
 }
 
 export type ErrorCode = 'unreadable' | 'unknown-function' | 'no-expansion' | 'needs-assumption' | 'undecided' | 'over-budget' | 'bad-request';

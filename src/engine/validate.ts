@@ -63,6 +63,7 @@ const SPECIFIC: Readonly<Record<Request['ask'], Readonly<Record<string, Check>>>
     format: text,
     emit: text,
     tolerance: positive,
+    derivative: flag,
     library: (v) => (typeof v === 'number' && v >= 0.5 && v <= 1e6 ? null : 'must be a number of ulp from 0.5 on'),
   },
   check: { of: text },

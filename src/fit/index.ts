@@ -3,3 +3,4 @@ export { fit, type Fit, type FitProblem } from './fit.ts';
 export { formatByName, type FloatFormat, type FixedFormat, type NumberFormat } from './format.ts';
 export { countOperations, type Arithmetic, type Operations, type Program } from './program.ts';
 export type { FitMeasure, ProvedError } from './proof.ts';
+export { parityOf } from './target.ts';

@@ -1,0 +1,47 @@
+/** Numbers and sentences of a guard, for answers and comments. */
+import { type Expression, Q } from '../expression/index.ts';
+import type { FloatFormat } from '../fit/index.ts';
+import { real } from '../rigorous/index.ts';
+import { toPlain } from '../write/index.ts';
+
+/** A bound as a decimal rounded up. */
+export const decimal = (x: number, digits = 4): string => real.rationalToDecimal(Q.fromDouble(x), digits, 1);
+
+export interface CommentFacts {
+  readonly function: Expression;
+  readonly variable: string;
+  readonly interval: readonly [string, string];
+  readonly format: FloatFormat;
+  readonly whole: number;
+  readonly series: number | null;
+  readonly direct: number | null;
+  readonly switchText: string | null;
+  readonly terms: number | null;
+  readonly assumptions: readonly string[];
+}
+
+const WIDTH = 92;
+
+export function commentOf(facts: CommentFacts): string[] {
+  const branches =
+    facts.series !== null && facts.switchText !== null ? ` (${decimal(facts.series)} within ${facts.switchText} of the point, by ${facts.terms} ${facts.terms === 1 ? 'term' : 'terms'} of the series; ${decimal(facts.direct ?? 0)} beyond)` : '';
+  return [
+    `${toPlain(facts.function)} for ${facts.variable.replace(/\\/g, '')} in [${facts.interval.join(', ')}], ${facts.format.name}.`,
+    `Proven for every ${facts.format.name} argument in the interval, evaluation included: relative error at most ${decimal(facts.whole)}${branches}.`,
+    `Assumes: ${facts.assumptions.join('; ')}.`,
+    'Valid only on this interval and in this format. In safety-related code follow your own standards and have it reviewed by qualified people.',
+  ].flatMap(filled);
+}
+
+/** Words of one sentence in lines of bounded width. */
+function filled(text: string): string[] {
+  const lines: string[] = [];
+  let line = '';
+  for (const word of text.split(' ')) {
+    if (line !== '' && line.length + 1 + word.length > WIDTH) {
+      lines.push(line);
+      line = word;
+    } else line = line === '' ? word : `${line} ${word}`;
+  }
+  return [...lines, line];
+}

@@ -3,6 +3,7 @@ import { build, children, sameExpression, walk, type Assumption, type Expression
 import { attempt, type Budget, Declined, type Outcome } from '../outcome.ts';
 import type { Finding } from '../protocol.ts';
 import { type MacroTable, readExact, readExpression, readNotes, readVariable, settingsAt } from '../read/index.ts';
+import { branchFindings, type BranchReader } from './branches.ts';
 import { type Claim, claimsOf } from './claims.ts';
 import { type Definitions, definitionsIn, resolve } from './definitions.ts';
 import { findingOf, unresolved, type Place } from './findings.ts';
@@ -23,6 +24,8 @@ export interface CheckParts {
   /** The function, where the text holds only its expansion: a formula, an equation that defines it, `derivative of ...`. */
   readonly of?: string;
   readonly assumptions?: readonly Assumption[];
+  /** Reads the series branches of a program; without it only comments are looked at. */
+  readonly code?: BranchReader;
   /** Macros of files that the document includes. */
   readonly macros?: MacroTable;
 }
@@ -54,16 +57,25 @@ export function check(parts: CheckParts, budget: Budget): Outcome<Checked> {
       for (const claim of claimsIn(formula, given)) {
         const time = share(budget);
         const local = withNote({ ...asked, budget: time }, note, parts);
-        try {
-          findings.push(...checkClaim(claim, given, definitions, local, place));
-        } catch (error) {
-          if (!(error instanceof Declined)) throw error;
-          findings.push({ ...claim.span, claim: claim.span, verdict: 'undecided', severity: 'hint', reason: error.failure.message, found: '', fix: null });
-        }
+        findings.push(...withinTime(claim.span, () => checkClaim(claim, given, definitions, local, place)));
       }
     }
-    return { findings, unread };
+    for (const branch of parts.code?.readBranches(parts.text, parts.language) ?? []) {
+      const note = settingsAt(notes, branch.span.start);
+      if (note.skip !== true) findings.push(...withinTime(branch.span, () => branchFindings(parts.text, branch, withNote({ ...asked, budget: share(budget) }, note, parts))));
+    }
+    return { findings: findings.sort((a, b) => a.claim.start - b.claim.start || a.start - b.start), unread };
   });
+}
+
+/** The findings, or that there was no time for them. */
+function withinTime(span: { readonly start: number; readonly end: number }, find: () => readonly Finding[]): readonly Finding[] {
+  try {
+    return find();
+  } catch (error) {
+    if (!(error instanceof Declined)) throw error;
+    return [{ ...span, claim: span, verdict: 'undecided', severity: 'hint', reason: error.failure.message, found: '', fix: null }];
+  }
 }
 
 function claimsIn(formula: FoundFormula, given: Expression | null): readonly Claim[] {

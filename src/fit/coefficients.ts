@@ -17,13 +17,13 @@ export interface RoundedCoefficients {
 /** The least unit in which a coefficient of about this size can be stepped. */
 const unitExponent = (c: Rational, format: NumberFormat): number => (format.kind === 'float' ? ulpExponent(c, format) : -format.fractionBits);
 
-/** Null where a coefficient overflows the format. */
-export function roundCoefficients(found: Found, format: NumberFormat, budget: Budget): RoundedCoefficients | null {
+/** Null where a coefficient overflows the format. With `nearest` each coefficient is only rounded. */
+export function roundCoefficients(found: Found, format: NumberFormat, nearest: boolean, budget: Budget): RoundedCoefficients | null {
   const { grid, powers } = found.problem;
   const exact = found.result.coefficients.map((c) => fromFixed(c, grid.bits));
   const residualAt = (values: readonly Rational[]): Residual =>
     values.reduce((residual, v, k) => shiftedResidual(residual, grid, powers[k] ?? 0, Q.subtract(v, exact[k] ?? Q.ZERO)), found.result.residual);
-  const candidates = [() => oneByOne(exact, format), () => inTurn(found, format, budget), () => together(found, format)];
+  const candidates = [() => oneByOne(exact, format), ...(nearest ? [] : [() => inTurn(found, format, budget), () => together(found, format)])];
   let best: RoundedCoefficients | null = null;
   for (const make of candidates) {
     budget.check();

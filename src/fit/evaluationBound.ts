@@ -1,16 +1,16 @@
 /** The rounding error of a program over an interval: a list of pieces, each with its own binades, and what follows from them in each measure. */
 import { Q, type Rational } from '../expression/index.ts';
-import type { Budget } from '../outcome.ts';
+import { type Budget, Declined } from '../outcome.ts';
 import { type Interval, interval } from '../rigorous/index.ts';
-import { approximateValue, evaluationError } from './evaluationError.ts';
-import { ulpExponent } from './format.ts';
+import { approximateValue, ERROR_BITS, evaluationError } from './evaluationError.ts';
+import { powerOfTwo, ulpExponent } from './format.ts';
 import type { Arithmetic, Program } from './program.ts';
 
 export interface ErrorPiece {
   readonly x: Interval;
   /** Range of the exact value of the program on the piece. */
   readonly value: Interval;
-  /** |computed - exact| on the piece, and its part before the last rounding. */
+  /** |computed - exact| on the piece in units of 2^-ERROR_BITS, and its part before the last rounding. */
   readonly error: number;
   readonly before: number;
 }
@@ -49,8 +49,8 @@ export interface PieceOptions {
   readonly high: Rational;
   /** The zero of the function that the program keeps, or a place that lies outside. */
   readonly centre: Rational;
-  /** Also cut where the value passes a power of two. */
-  readonly binades: boolean;
+  /** Also cut where the value passes a power of two, on both sides of it by this part of the value; 0: do not. */
+  readonly sliver: number;
 }
 
 /** Sound for every float argument in [low, high]; throws Declined where the evaluation can overflow or divide by zero. */
@@ -65,18 +65,18 @@ export function errorPieces(program: Program, variable: string, arithmetic: Arit
   };
   const value = (x: number): number => Math.abs(approximateValue(program, variable, x));
   for (const x of arguments_(a, b, Q.toDouble(options.centre), nearest(options.centre, arithmetic))) {
-    const cuts = options.binades ? binadeCuts(value, x, arithmetic.result.emin) : [];
+    const cuts = options.sliver > 0 ? binadeCuts(value, x, arithmetic.result.emin, Math.max(SLIVER, options.sliver)) : [];
     const ends = [x.lo, ...cuts, x.hi];
     for (let k = 0; k + 1 < ends.length; k += 1) add({ lo: ends[k] ?? x.lo, hi: ends[k + 1] ?? x.hi });
   }
   return list;
 }
 
-/** Relative width of the sliver that is cut out around a power of two: above the uncertainty of double arithmetic. */
+/** Least relative width of the sliver that is cut out around a power of two: above the uncertainty of double arithmetic. */
 const SLIVER = 2 ** -44;
 
 /** Arguments just before and after the one where the value passes a power of two; only places to cut, no proof rests on them. */
-function binadeCuts(value: (x: number) => number, { lo, hi }: Interval, emin: number): number[] {
+function binadeCuts(value: (x: number) => number, { lo, hi }: Interval, emin: number, sliver: number): number[] {
   const [from, to] = [value(lo), value(hi)];
   const [small, large] = from < to ? [from, to] : [to, from];
   if (!(large < Infinity) || large < 2 ** emin) return [];
@@ -97,19 +97,26 @@ function binadeCuts(value: (x: number) => number, { lo, hi }: Interval, emin: nu
   const first = Math.max(Math.floor(Math.log2(Math.max(small, 2 ** (emin - 1)))), emin);
   for (let k = first; 2 ** k <= large && k < first + 64; k += 1) {
     const level = 2 ** k;
-    for (const target of [level * (1 - SLIVER), level * (1 + SLIVER)]) if (small < target && target < large) cuts.push(locate(target));
+    for (const target of [level * (1 - sliver), level * (1 + sliver)]) if (small < target && target < large) cuts.push(locate(target));
   }
   return [...new Set(cuts)].filter((x) => lo < x && x < hi).sort((p, q) => p - q);
 }
 
+/** A bound in the unit of errors as a number. */
+export const errorOf = (error: number): Rational => Q.multiply(Q.fromDouble(error), powerOfTwo(-ERROR_BITS));
+const finite = (error: number): number => {
+  if (!(error < Infinity)) throw new Declined('undecided', 'The rounding error could not be bounded on this interval; take a smaller one.');
+  return error;
+};
+
 /** sup |computed - p|. */
-export const absoluteError = (pieces: readonly ErrorPiece[]): number => pieces.reduce((most, p) => Math.max(most, p.error), 0);
+export const absoluteError = (pieces: readonly ErrorPiece[]): Rational => errorOf(finite(pieces.reduce((most, p) => Math.max(most, p.error), 0)));
 
 export interface RelativeError {
   /** sup |computed - p| / |p| where |f| is at least the smallest normal number; Infinity where no bound is known. */
   readonly relative: number;
   /** sup |computed - p| where |f| can be below it; null where it cannot. */
-  readonly subnormal: number | null;
+  readonly subnormal: Rational | null;
 }
 
 /** With |p - f| <= r |f|: the smallest normal number as a limit for |f| is (1 - r) times that for |p|. */
@@ -122,9 +129,9 @@ export function relativeError(pieces: readonly ErrorPiece[], r: number, { result
     if (interval.leastSize(value) < interval.up(normal * interval.up(1 + r))) subnormal = Math.max(subnormal ?? 0, error);
     if (interval.size(value) < least) continue;
     const size = Math.max(interval.leastSize(value), least);
-    relative = Math.max(relative, error === 0 ? 0 : size > 0 ? interval.up(error / size) : Infinity);
+    relative = Math.max(relative, error === 0 ? 0 : size > 0 ? interval.up(interval.up(error / size) / 2 ** ERROR_BITS) : Infinity);
   }
-  return { relative, subnormal };
+  return { relative, subnormal: subnormal === null ? null : errorOf(finite(subnormal)) };
 }
 
 /** Consecutive pieces on which one ulp of f is at least 2^exponent. */
@@ -132,7 +139,7 @@ export interface BinadeRun {
   readonly low: number;
   readonly high: number;
   readonly exponent: number;
-  /** sup |computed - p| and sup |p| there. */
+  /** sup |computed - p| (in units of 2^-ERROR_BITS) and sup |p| there. */
   readonly error: number;
   readonly size: number;
 }
@@ -161,8 +168,8 @@ export function binadeRuns(pieces: readonly ErrorPiece[], r: number, { result }:
       continue;
     }
     // A sliver around a power of two: where |f| is below it, what is rounded last is less than this beyond it (a float), and rounds by no more than that.
-    const beyond = interval.up(interval.up(r * level) + before);
-    add(x, exponent, interval.up(before + Math.min(2 ** exponent, Math.max(2 ** (exponent - 1), beyond))), size);
+    const beyond = interval.up(interval.up(interval.up(r * level) * 2 ** ERROR_BITS) + before);
+    add(x, exponent, interval.up(before + Math.min(2 ** (exponent + ERROR_BITS), Math.max(2 ** (exponent - 1 + ERROR_BITS), beyond))), size);
     add(x, higher, error, size);
   }
   return runs;

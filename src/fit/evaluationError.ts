@@ -15,7 +15,7 @@ import type { Arithmetic, Program } from './program.ts';
 export interface RoundedValue {
   /** Encloses the exact value of the tree (exact operations on the exact argument) over the whole argument interval. */
   readonly exact: Interval;
-  /** |computed - exact| at most this, where nothing overflows. */
+  /** |computed - exact| at most this times 2^-ERROR_BITS, where nothing overflows. The scale keeps errors below the smallest double apart from zero. */
   readonly absolute: number;
   /** The part of it that was there before the last rounding. */
   readonly before: number;
@@ -25,27 +25,30 @@ export interface RoundedValue {
   readonly slope: Interval;
 }
 
+/** Errors are carried as multiples of 2^-ERROR_BITS. */
+export const ERROR_BITS = 64;
+const SCALE = 2 ** ERROR_BITS;
+
 const { up } = interval;
 const addUp = (a: number, b: number): number => (a === 0 ? b : b === 0 ? a : up(a + b));
 const mulUp = (a: number, b: number): number => (a === 0 || b === 0 ? 0 : up(a * b));
 const UNIT: Interval = { lo: 0, hi: 1 };
 
 /**
- * The largest rounding error of a result of at most this size: half an ulp of the binade below it, or its distance beyond the start of its own binade
- * (a float) where that is less; never more than the size itself (zero is a float).
+ * The largest rounding error of a result of at most this size, in units of 2^-ERROR_BITS: half an ulp of the binade below it, or its distance beyond the start of
+ * its own binade (a float) where that is less; never more than the size itself (zero is a float). `scaled` is the size in the same unit, where it is known better.
  */
-export function roundingError(magnitude: number, format: FloatFormat): number {
-  if (magnitude === 0) return 0;
+export function roundingError(magnitude: number, format: FloatFormat, scaled = magnitude * SCALE): number {
+  if (magnitude === 0 || scaled === 0) return 0;
   if (!(magnitude < Infinity)) return Infinity;
   let e = Math.max(Math.floor(Math.log2(magnitude)), format.emin);
   // The logarithm is only a guess: settle it by exact powers of two.
   while (2 ** (e + 1) <= magnitude) e += 1;
   while (e > format.emin && 2 ** e > magnitude) e -= 1;
-  // Half of the smallest subnormal double is no double: round it up.
-  const half = Math.max(2 ** (e - format.precision), Number.MIN_VALUE);
+  const half = 2 ** (e - format.precision + ERROR_BITS);
   const start = 2 ** e;
-  const below = e > format.emin && magnitude >= start ? Math.max(half / 2, up(magnitude - start)) : half;
-  return Math.min(half, below, magnitude);
+  const below = e > format.emin && magnitude >= start ? Math.max(half / 2, up(magnitude - start) * SCALE) : half;
+  return Math.min(half, below, scaled);
 }
 
 export const exactValue = (exact: Interval, atLow = exact, atHigh = exact, slope: Interval = interval.ZERO): RoundedValue => ({ exact, absolute: 0, before: 0, atLow, atHigh, slope });
@@ -63,18 +66,24 @@ function sharpened(naive: Interval, atLow: Interval, atHigh: Interval, slope: In
   return { exact: meet(meet(naive, interval.add(atLow, way)), interval.subtract(atHigh, way)), atLow, atHigh, slope };
 }
 
-/** Rounding of a result. */
-function rounded(exact: Exact, absolute: number, format: FloatFormat): RoundedValue {
-  const magnitude = addUp(interval.size(exact.exact), absolute);
+/** Rounding of a result; `scaled` bounds the exact one in the unit of errors. */
+function rounded(exact: Exact, absolute: number, format: FloatFormat, scaled = interval.size(exact.exact) * SCALE): RoundedValue {
+  const magnitude = addUp(interval.size(exact.exact), up(absolute / SCALE));
   const limit = 2 ** format.emax * (2 - 2 ** (1 - format.precision));
   if (!(magnitude <= limit)) throw new Declined('bad-request', `The evaluation can overflow ${format.name} on this interval; take a smaller interval or a wider format.`);
-  return withError(exact, addUp(absolute, roundingError(magnitude, format)), absolute);
+  return withError(exact, addUp(absolute, roundingError(magnitude, format, addUp(scaled, absolute))), absolute);
 }
 
 const withError = ({ exact, atLow, atHigh, slope }: Exact, absolute: number, before: number): RoundedValue => ({ exact, absolute, before, atLow, atHigh, slope });
 
 const productError = (a: RoundedValue, b: RoundedValue): number =>
-  addUp(addUp(mulUp(interval.size(a.exact), b.absolute), mulUp(interval.size(b.exact), a.absolute)), mulUp(a.absolute, b.absolute));
+  addUp(addUp(mulUp(interval.size(a.exact), b.absolute), mulUp(interval.size(b.exact), a.absolute)), mulUp(a.absolute, up(b.absolute / SCALE)));
+
+/** |a b| in the unit of errors, the scale given to the smaller factor so that it does not underflow. */
+function scaledProduct(a: Exact, b: Exact): number {
+  const [x, y] = [interval.size(a.exact), interval.size(b.exact)];
+  return x < y ? mulUp(x * SCALE, y) : mulUp(x, y * SCALE);
+}
 
 /** The exponent of a constant that is a power of two (or its negative): multiplying by it only underflows. */
 function powerOfTwoFactor(e: Expression): number | null {
@@ -167,12 +176,13 @@ class Evaluator {
     let leftPower = numbers.get(first)?.power ?? null;
     for (const node of rest) {
       const value = this.visit(node);
+      const factor = left;
       const whole = this.#times(left, value);
       const error = productError(left, value);
       const k = leftPower ?? numbers.get(node)?.power ?? null;
       leftPower = null;
       // By a power of two of at least one nothing is lost; by a smaller one only digits below the smallest subnormal.
-      if (k === null || (k < 0 && interval.leastSize(whole.exact) < 2 ** this.#format.emin)) left = rounded(whole, error, this.#format);
+      if (k === null || (k < 0 && interval.leastSize(whole.exact) < 2 ** this.#format.emin)) left = rounded(whole, error, this.#format, scaledProduct(factor, value));
       else left = withError(rounded(whole, error, this.#format), error, error);
     }
     return left;
@@ -182,7 +192,7 @@ class Evaluator {
     const { divide, multiply, subtract, square } = interval;
     const [exact, atLow, atHigh] = [divide(a.exact, b.exact), divide(a.atLow, b.atLow), divide(a.atHigh, b.atHigh)];
     const slope = divide(subtract(multiply(a.slope, b.exact), multiply(a.exact, b.slope)), square(b.exact));
-    const least = interval.down(interval.leastSize(b.exact) - b.absolute);
+    const least = interval.down(interval.leastSize(b.exact) - up(b.absolute / SCALE));
     if (!exact || !atLow || !atHigh || !slope || !(least > 0)) throw new Declined('bad-request', 'A divisor can be zero on this interval; take a smaller interval.');
     const range = sharpened(exact, atLow, atHigh, slope, this.#width);
     const absolute = up(addUp(a.absolute, mulUp(interval.size(range.exact), b.absolute)) / least);

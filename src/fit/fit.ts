@@ -1,5 +1,5 @@
 /** A fit as asked for: the polynomial, the program in the target language, what was proved, what was assumed. */
-import type { Rational } from '../expression/index.ts';
+import { type Expression, Q, type Rational } from '../expression/index.ts';
 import { attempt, type Budget, Declined, type Outcome } from '../outcome.ts';
 import { real } from '../rigorous/index.ts';
 import { codeLanguage, type PolynomialTerm, toPlain } from '../write/index.ts';
@@ -9,7 +9,6 @@ import { fitPolynomial, type PolynomialProblem } from './polynomialFit.ts';
 import type { Program } from './program.ts';
 import type { FitMeasure, ProvedError } from './proof.ts';
 import type { Basis } from './search.ts';
-import type { Expression } from '../expression/index.ts';
 
 export interface FitProblem {
   readonly function: Expression;
@@ -98,7 +97,10 @@ function mapNode(e: Expression, f: (e: Expression) => Expression): Expression {
 }
 
 /** `sin approximation` for a call of one function, else only `approximation`. */
-const wordsFor = (f: Expression): readonly string[] => [...(f.kind === 'call' && /^[a-z]\w*$/i.test(f.function) ? [f.function] : []), 'approximation'];
+function wordsFor(f: Expression): readonly string[] {
+  const name = f.kind === 'call' ? f.function : f.kind === 'power' && f.base.kind === 'constant' && f.base.name === 'e' ? 'exp' : f.kind === 'power' && f.exponent.kind === 'number' && Q.equal(f.exponent.value, Q.HALF) ? 'sqrt' : '';
+  return [...(/^[a-z]\w*$/i.test(name) ? [name] : []), 'approximation'];
+}
 
 const METHODS = { minimax: 'best polynomial, coefficients rounded together', taylor: 'truncated expansion', economized: 'economized expansion', rational: 'best rational function' } as const;
 const methodText = ({ method }: FitProblem): string => `${METHODS[method]}; local models with proven remainders; rounding bounded operation by operation`;

@@ -3,12 +3,15 @@ import { type Expression, Q, type Rational } from '../expression/index.ts';
 import { type Budget, Declined } from '../outcome.ts';
 import type { PolynomialTerm } from '../write/index.ts';
 import { type RoundedCoefficients, roundCoefficients } from './coefficients.ts';
+import { level } from './exchange.ts';
 import { fromFixed } from './fixed.ts';
-import { type FloatFormat, powerOfTwo } from './format.ts';
-import { type Arithmetic, polynomialProgram, type Program } from './program.ts';
+import { binaryExponent, type FloatFormat, powerOfTwo, roundTo } from './format.ts';
+import { shiftedResidual } from './grid.ts';
+import { type Arithmetic, canStandApart, polynomialProgram, type Program } from './program.ts';
 import { certified, type CertifiedPolynomial, errorParts, type EvaluationProof, type FitMeasure, type ProofProblem, type ProvedError, proveProgram } from './proof.ts';
 import { type Basis, basisFor, bestOfDegree, type Found, leastDegree, leastWithin, nextDegree, type Search } from './search.ts';
 import { type FitTarget, prepareTarget } from './target.ts';
+import { economizedOfDegree, taylorOfDegree, taylorWithin } from './truncated.ts';
 
 export interface PolynomialProblem {
   readonly function: Expression;
@@ -52,20 +55,41 @@ const WORKING_BITS = 320;
 
 /** Throws Declined with bad-request (parameters, zeros, singular points), undecided (nothing could be proved), over-budget. */
 export function fitPolynomial(problem: PolynomialProblem, budget: Budget): PolynomialFit {
-  const { low, high, format } = problem;
+  const { low, high, format, method } = problem;
   if (Q.compare(low, high) >= 0) throw new Declined('bad-request', 'The interval of a fit needs two different ends, the smaller one first.');
+  const atZero = Q.compare(low, Q.ZERO) <= 0 && Q.compare(Q.ZERO, high) <= 0;
+  const middle = roundTo(Q.divide(Q.add(low, high), Q.rational(2)), format) ?? Q.ZERO;
+  if (method === 'taylor' && !atZero) return about(middle, problem, budget);
+  try {
+    return about(Q.ZERO, problem, budget);
+  } catch (error) {
+    // Far from zero the powers of x cancel: about the middle they do not, where x - middle is exact.
+    if (atZero || !(error instanceof Declined) || error.failure.code === 'over-budget' || error.failure.code === 'needs-assumption') throw error;
+    try {
+      return about(middle, problem, budget);
+    } catch {
+      throw error;
+    }
+  }
+}
+
+function about(centre: Rational, problem: PolynomialProblem, budget: Budget): PolynomialFit {
+  const { low, high, format, method } = problem;
   const relative = problem.measure !== 'absolute';
-  const target = prepareTarget(problem.function, problem.variable, low, high, relative, WORKING_BITS, budget);
+  const target = prepareTarget(problem.function, problem.variable, low, high, relative, WORKING_BITS, budget, centre);
   const search: Search = { target, relative, low: Q.subtract(low, target.zero), high: Q.subtract(high, target.zero), basis: basisFor(target, low, high, problem.basis) };
   const setting: Setting = { problem, search, proof: proofProblem(problem, search) };
   if (problem.degree !== undefined) {
-    const found = bestOfDegree(search, Math.max(problem.degree, leastDegree(search)), budget);
+    const degree = Math.max(problem.degree, leastDegree(search));
+    const found = method === 'taylor' ? taylorOfDegree(search, degree, budget) : method === 'economized' ? economizedOfDegree(search, degree, budget) : bestOfDegree(search, degree, budget);
     if (!found) throw new Declined('undecided', 'No best polynomial of this degree was found on this interval; take a smaller interval or another degree.');
     return finished(setting, candidate(setting, found, budget), budget);
   }
   const tolerance = problem.tolerance ?? Q.ZERO;
-  let found = leastWithin(search, relativeGoal(problem), budget);
-  if (!found) throw new Declined('bad-request', 'No polynomial of degree up to 120 keeps this tolerance; take a smaller interval or a larger tolerance.');
+  const goal = relativeGoal(problem);
+  let found: Found | null = method === 'taylor' ? taylorWithin(search, goal, 0, budget) : leastWithin(search, goal, budget);
+  if (!found) throw new Declined('bad-request', 'No polynomial of degree up to 160 keeps this tolerance; take a smaller interval or a larger tolerance.');
+  if (method === 'economized') found = economizedOfDegree(search, found.degree, budget);
   let best: Candidate | null = null;
   // The least degree for the approximation alone may lose the tolerance to rounding: then the next ones are tried while that can help.
   for (let tries = 0; tries < 4; tries += 1) {
@@ -73,12 +97,13 @@ export function fitPolynomial(problem: PolynomialProblem, budget: Budget): Polyn
     if (Q.compare(next.proof.total, tolerance) <= 0) return finished(setting, next, budget);
     if (!best || Q.compare(next.proof.total, best.proof.total) < 0) best = next;
     if (Q.compare(next.proof.evaluation, tolerance) >= 0) break;
-    const more: Found | null = bestOfDegree(search, nextDegree(search, found.degree), budget);
+    const degree = nextDegree(search, found.degree);
+    const more: Found | null = method === 'taylor' ? taylorOfDegree(search, degree, budget) : method === 'economized' ? economizedOfDegree(search, degree, budget) : bestOfDegree(search, degree, budget);
     if (!more) break;
     found = more;
   }
   const reached = Q.toDouble(best?.proof.total ?? Q.ONE).toExponential(2);
-  throw new Declined('bad-request', `Rounding in ${format.name} alone takes this tolerance away: the best proven error is ${reached}; allow a larger tolerance or a wider format.`);
+  throw new Declined('bad-request', `Rounding in ${format.name} takes this tolerance away: the smallest proven error is ${reached}; allow a larger tolerance or a wider format.`);
 }
 
 interface Setting {
@@ -112,18 +137,59 @@ const shiftBy = (coefficients: readonly Rational[], { powers }: { readonly power
   coefficients.map((value, k) => ({ power: (powers[k] ?? 0) + order, value }));
 
 /** Rounds the coefficients, certifies the polynomial and takes the program with the smaller proven error. */
-function candidate({ problem, search, proof }: Setting, found: Found, budget: Budget): Candidate {
-  const { format, variable, form, fma } = problem;
-  const { order, zero } = search.target;
-  const rounded: RoundedCoefficients | null = roundCoefficients(found, format, budget);
+function candidate(setting: Setting, found: Found, budget: Budget): Candidate {
+  const { problem } = setting;
+  const plain = bestProgram(setting, found, roundedTerms(setting, found, budget), null, budget);
+  const enough = problem.tolerance && Q.compare(plain.proof.total, problem.tolerance) <= 0;
+  // Where rounding dominates, leading coefficients that multiply exactly can save most of it at a small cost in approximation.
+  if (enough || problem.method === 'taylor' || (problem.measure !== 'ulp' && Q.compare(plain.proof.evaluation, plain.polynomial.whole.upper) < 0)) return plain;
+  const apart = exactlyLed(setting, found, budget);
+  return apart && !apart.every((t, k) => Q.equal(t.value, plain.polynomial.terms[k]?.value ?? Q.ZERO)) ? bestProgram(setting, found, apart, plain, budget) : plain;
+}
+
+function roundedTerms({ problem, search }: Setting, found: Found, budget: Budget): readonly PolynomialTerm[] {
+  const { format, method } = problem;
+  const rounded: RoundedCoefficients | null = roundCoefficients(found, format, method === 'taylor', budget);
   if (!rounded) throw new Declined('bad-request', `A coefficient is beyond the range of ${format.name}; take another format or interval.`);
-  const polynomial = certified(shiftBy(rounded.values, found.problem, order), proof, budget);
-  let best: Candidate | null = null;
-  for (const leadingApart of order === 1 ? [false, true] : [false]) {
-    const program = polynomialProgram(polynomial.terms, variable, zero, { form, fma, leadingApart });
-    const writtenProgram = problem.writtenFma === fma ? program : polynomialProgram(polynomial.terms, variable, zero, { form, fma: problem.writtenFma, leadingApart });
+  return shiftBy(rounded.values, found.problem, search.target.order);
+}
+
+/** The polynomial with its first coefficient rounded and the next one a power of two, the others fitted again; null where that does not apply or settle. */
+function exactlyLed({ problem, search }: Setting, { problem: { grid, powers }, result }: Found, budget: Budget): readonly PolynomialTerm[] | null {
+  const { order } = search.target;
+  const power = (k: number): number => (powers[k] ?? 0) + order;
+  const lead = power(0) === 0 ? 1 : 0;
+  if (power(lead) > 2 || power(lead) !== (lead === 1 ? power(1) : 1) || powers.length <= lead + 1) return null;
+  const exact = result.coefficients.map((c) => fromFixed(c, grid.bits));
+  const value = exact[lead] ?? Q.ZERO;
+  if (Q.isZero(value)) return null;
+  const exponent = binaryExponent(Q.multiply(Q.absolute(value), Q.rational(3, 2)));
+  const near = Q.multiply(powerOfTwo(exponent), Q.rational(Q.signOf(value)));
+  if (Q.compare(Q.absolute(Q.subtract(near, value)), Q.multiply(Q.absolute(value), Q.rational(1, 1000))) > 0) return null;
+  const first = lead === 1 ? roundTo(exact[0] ?? Q.ZERO, problem.format) : null;
+  if (lead === 1 && !first) return null;
+  const fixed = first ? [first, near] : [near];
+  const residual = fixed.reduce((r, v, k) => shiftedResidual(r, grid, powers[k] ?? 0, Q.subtract(v, exact[k] ?? Q.ZERO)), result.residual);
+  const rest = level(grid, powers.slice(fixed.length), result.coefficients.slice(fixed.length), residual, budget);
+  if (!rest) return null;
+  // The rest is rounded against what the fixed coefficients leave of the function.
+  const remaining: Found = { problem: { grid, powers: powers.slice(fixed.length) }, result: rest, degree: 0 };
+  const rounded = roundCoefficients(remaining, problem.format, false, budget);
+  return rounded && shiftBy([...fixed, ...rounded.values], { powers }, order);
+}
+
+function bestProgram({ problem, search, proof }: Setting, found: Found, terms: readonly PolynomialTerm[], known: Candidate | null, budget: Budget): Candidate {
+  const { variable, form, fma } = problem;
+  const { zero } = search.target;
+  const polynomial = certified(terms, proof, budget);
+  let best = known;
+  for (const leadingApart of [false, true]) {
+    if (leadingApart && !canStandApart(terms)) continue;
+    const program = polynomialProgram(terms, variable, zero, { form, fma, leadingApart });
+    const writtenProgram = problem.writtenFma === fma ? program : polynomialProgram(terms, variable, zero, { form, fma: problem.writtenFma, leadingApart });
     const next = { found, polynomial, program, writtenProgram, proof: proveProgram(program, polynomial, proof, budget) };
-    if (!best || Q.compare(next.proof.total, best.proof.total) < 0) best = next;
+    // One more operation is only worth a smaller error.
+    if (!best || Q.compare(Q.multiply(next.proof.total, Q.rational(102, 100)), best.proof.total) < 0) best = next;
   }
   if (!best) throw new RangeError('no program was tried');
   return best;

@@ -1,7 +1,7 @@
 /** What a machine computes for one argument: named steps in order, then the result. The proof and the emitted code are both made from it. */
 import { build, type Expression, Q, type Rational } from '../expression/index.ts';
-import { polynomialForm, type PolynomialForm, type PolynomialTerm, type Step } from '../write/index.ts';
-import type { FloatFormat } from './format.ts';
+import { polynomialForm, type PolynomialForm, type PolynomialTerm, type Step, strided } from '../write/index.ts';
+import { binaryExponent, type FloatFormat, powerOfTwo } from './format.ts';
 
 export type Program = PolynomialForm;
 export type { Step };
@@ -31,14 +31,41 @@ export function polynomialProgram(terms: readonly PolynomialTerm[], variable: st
   const first: Step[] = shifted ? [{ name: offset, value: build.sum(x, build.number(Q.negate(centre))) }] : [];
   const prefix = stepName('u', variable);
   const kept = terms.filter((t) => !Q.isZero(t.value));
-  const [lead, ...rest] = kept;
-  if (shape.leadingApart && lead && lead.power === 1 && rest.length > 0) {
-    const form = polynomialForm(rest, argument, shape, prefix);
-    const head = Q.isOne(lead.value) ? argument : build.product(build.number(lead.value), argument);
-    return { steps: [...first, ...form.steps], result: sumWith(head, form.result, shape.fma) };
+  if (shape.leadingApart && canStandApart(kept)) {
+    const constant = kept[0]?.power === 0 ? kept[0] : null;
+    const [lead, ...rest] = constant ? kept.slice(1) : kept;
+    const form = apartForm(lead, rest, argument, shape, prefix);
+    const result = constant ? build.sum(build.number(constant.value), form.result) : form.result;
+    return { steps: [...first, ...form.steps], result };
   }
   const form = polynomialForm(kept, argument, shape, prefix);
   return { steps: [...first, ...form.steps], result: form.result };
+}
+
+/** Whether the leading power has a coefficient that multiplies exactly, so that it can be added last. */
+export function canStandApart(terms: readonly PolynomialTerm[]): boolean {
+  const kept = terms.filter((t) => !Q.isZero(t.value));
+  const [lead, ...rest] = kept[0]?.power === 0 ? kept.slice(1) : kept;
+  if (!lead || rest.length === 0) return false;
+  const exact = Q.equal(Q.absolute(lead.value), powerOfTwo(binaryExponent(lead.value)));
+  return exact && (lead.power === 1 || (kept[0]?.power === 0 && lead.power === 2)) && rest.every((t) => (t.power - lead.power) % lead.power === 0 || lead.power === 1);
+}
+
+/** lead u + u v (rest), v the common power: the product is small against the leading term, which is exact. */
+function apartForm(lead: PolynomialTerm | undefined, rest: readonly PolynomialTerm[], argument: Expression, shape: PolynomialProgramShape, prefix: string): PolynomialForm {
+  if (!lead) return polynomialForm(rest, argument, shape, prefix);
+  const { lowest, stride } = strided(rest);
+  const scale = (e: Expression): Expression => (Q.isOne(lead.value) ? e : Q.equal(lead.value, Q.MINUS_ONE) ? build.negation(e) : build.product(build.number(lead.value), e));
+  // In powers of u = x^2 where they are all even, or where the step x^2 exists already.
+  if (lead.power === 2 || (stride === 2 && lowest === 3)) {
+    const u = build.symbol(prefix);
+    const inner = polynomialForm(rest.map((t) => ({ power: (t.power - lowest) / 2, value: t.value })), u, shape, prefix);
+    const factors = lead.power === 2 ? Array.from({ length: lowest / 2 }, () => u) : [argument, u];
+    const product = build.isOneNumber(inner.result) ? build.product(...factors) : build.product(...factors, inner.result);
+    return { steps: [{ name: prefix, value: build.product(argument, argument) }, ...inner.steps], result: sumWith(scale(lead.power === 2 ? u : argument), product, shape.fma) };
+  }
+  const form = polynomialForm(rest, argument, shape, prefix);
+  return { steps: form.steps, result: sumWith(scale(argument), form.result, shape.fma) };
 }
 
 /** head + product, fused where the last factor of the product allows it. */

@@ -3,7 +3,7 @@ import { boundDifference, type DifferenceBound, polynomialOf } from '../bound/in
 import { type Expression, Q, type Rational } from '../expression/index.ts';
 import { type Budget, Declined } from '../outcome.ts';
 import type { PolynomialTerm } from '../write/index.ts';
-import { absoluteError, type BinadeRun, binadeRuns, errorPieces, relativeError } from './evaluationBound.ts';
+import { absoluteError, type BinadeRun, binadeRuns, errorOf, errorPieces, relativeError } from './evaluationBound.ts';
 import { powerOfTwo, smallestNormal, unitRoundoff } from './format.ts';
 import type { Arithmetic, Program } from './program.ts';
 
@@ -76,13 +76,17 @@ export const certified = (terms: readonly PolynomialTerm[], problem: ProofProble
 /** Certified parts of an interval that one bound in ulp may rest on. */
 const MOST_PARTS = 12;
 
+/** Below this part of the largest value the relative bound serves: next to a shared zero it is as good. */
+const SMALL = 2 ** -12;
+
 /** sup over the runs of (|p - f| + spent error) / ulp: the worst run is certified by itself until the worst one is certified. */
 function inUlp(polynomial: CertifiedPolynomial, runs: readonly BinadeRun[], problem: ProofProblem, withEvaluation: boolean, budget: Budget): Rational {
   // |p - f| <= r |f| and |f| <= |p| / (1 - r).
   const coarse = Q.divide(polynomial.whole.upper, Q.subtract(Q.ONE, polynomial.whole.upper));
+  const largest = runs.reduce((most, run) => Math.max(most, run.size), 0);
   const entries = runs.map((run) => {
-    const spent = withEvaluation ? Q.multiply(fromBound(run.error), powerOfTwo(-run.exponent)) : Q.ZERO;
-    return { run, spent, total: Q.add(Q.multiply(Q.multiply(coarse, fromBound(run.size)), powerOfTwo(-run.exponent)), spent), done: false };
+    const spent = withEvaluation ? Q.multiply(errorOf(run.error), powerOfTwo(-run.exponent)) : Q.ZERO;
+    return { run, spent, total: Q.add(Q.multiply(Q.multiply(coarse, fromBound(run.size)), powerOfTwo(-run.exponent)), spent), done: run.size < largest * SMALL };
   });
   for (let parts = 0; parts < MOST_PARTS; parts += 1) {
     const worst = entries.reduce<(typeof entries)[number] | null>((a, b) => (a && Q.compare(a.total, b.total) >= 0 ? a : b), null);
@@ -107,17 +111,19 @@ export interface EvaluationProof {
 /** The total error of one program that evaluates the polynomial. Throws Declined where it can overflow or where no relative bound is known. */
 export function proveProgram(program: Program, polynomial: CertifiedPolynomial, problem: ProofProblem, budget: Budget): EvaluationProof {
   const { measure, arithmetic } = problem;
-  const pieces = errorPieces(program, problem.variable, arithmetic, { low: problem.symmetric ? Q.ZERO : problem.low, high: problem.high, centre: problem.centre, binades: measure === 'ulp' }, budget);
   const upper = polynomial.whole.upper;
+  const r = Q.toDouble(upper) * (1 + 2 ** -50);
+  const sliver = measure === 'ulp' ? Math.min(2 * r + 2 ** -60, 2 ** -13) : 0;
+  const pieces = errorPieces(program, problem.variable, arithmetic, { low: problem.symmetric ? Q.ZERO : problem.low, high: problem.high, centre: problem.centre, sliver }, budget);
   if (measure === 'absolute') {
-    const spent = fromBound(absoluteError(pieces));
+    const spent = absoluteError(pieces);
     return { total: Q.add(upper, spent), evaluation: spent, subnormal: null, runs: [] };
   }
-  const r = Q.toDouble(upper) * (1 + 2 ** -50);
   if (!(r < 1)) throw new Declined('bad-request', 'The relative error of this polynomial reaches one; ask for a higher degree or the absolute measure.');
   const { relative, subnormal } = relativeError(pieces, r, arithmetic);
   if (measure === 'ulp') {
     const runs = binadeRuns(pieces, r, arithmetic);
+    if (!runs.every((run) => run.error < Infinity)) throw new Declined('undecided', 'The rounding error could not be bounded on this interval; take a smaller one.');
     const total = inUlp(polynomial, runs, problem, true, budget);
     return { total, evaluation: nonNegative(Q.subtract(total, inUlp(polynomial, runs, problem, false, budget))), subnormal: below(subnormal, upper, problem), runs };
   }
@@ -127,8 +133,8 @@ export function proveProgram(program: Program, polynomial: CertifiedPolynomial, 
   return { total: Q.add(upper, spent), evaluation: spent, subnormal: below(subnormal, upper, problem), runs: [] };
 }
 
-const below = (evaluation: number | null, r: Rational, { arithmetic }: ProofProblem): Rational | null =>
-  evaluation === null ? null : Q.add(fromBound(evaluation), Q.multiply(r, smallestNormal(arithmetic.result)));
+const below = (evaluation: Rational | null, r: Rational, { arithmetic }: ProofProblem): Rational | null =>
+  evaluation === null ? null : Q.add(evaluation, Q.multiply(r, smallestNormal(arithmetic.result)));
 
 /** Splits a total into what the best polynomial owes, what rounding its coefficients added, and what evaluation adds. */
 export function errorParts(proof: EvaluationProof, polynomial: CertifiedPolynomial, ideal: CertifiedPolynomial, problem: ProofProblem, budget: Budget): ProvedError {

@@ -51,7 +51,7 @@ const FEWEST_SAMPLES = 384;
 
 const grids = new WeakMap<Search, Grid>();
 
-function gridFor(search: Search, degree: number, budget: Budget): Grid {
+export function gridFor(search: Search, degree: number, budget: Budget): Grid {
   const count = Math.max(FEWEST_SAMPLES, SAMPLES_EACH * (Math.floor(degree / stepOf(search)) + 3));
   const known = grids.get(search);
   if (known && known.points.length >= count) return known;

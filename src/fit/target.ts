@@ -90,16 +90,16 @@ function valueAt(f: Expression, variable: string, x: Rational, bits: number): Re
 
 /**
  * Prepares f on [low, high]. With `divideOut` (relative measures) zeros are divided out: a zero at 0 or at another rational z that is proven;
- * a zero that is no such number is declined. Throws Declined with `bad-request` for free parameters and for points without a value.
+ * a zero that is no such number is declined. Without a zero the polynomial is in x - centre. Throws Declined with `bad-request` for free parameters and for points without a value.
  */
-export function prepareTarget(f: Expression, variable: string, low: Rational, high: Rational, divideOut: boolean, bits: number, budget: Budget): FitTarget {
+export function prepareTarget(f: Expression, variable: string, low: Rational, high: Rational, divideOut: boolean, bits: number, budget: Budget, centre: Rational = Q.ZERO): FitTarget {
   const others = freeSymbols(f).filter((name) => name !== variable);
   if (others.length > 0) throw new Declined('needs-assumption', `A fit needs numbers: give a value for ${others.slice(0, 3).join(', ')}.`);
   const inside = (q: Rational): boolean => Q.compare(low, q) <= 0 && Q.compare(q, high) <= 0;
   const zeroes = divideOut ? zerosOf(f, variable, low, high, budget) : [];
   if (zeroes.length > 1) throw new Declined('bad-request', 'The function has several zeros on this interval; split the interval between them or ask for the absolute measure.');
   const [found] = zeroes;
-  const zero = found ?? Q.ZERO;
+  const zero = found ?? centre;
   const shifted = Q.isZero(zero) ? f : substitute(f, variable, build.sum(build.symbol(variable), build.number(zero)));
   const parity = parityOf(shifted, variable);
   const local = inside(zero) ? orderAt(f, variable, zero, budget) : null;

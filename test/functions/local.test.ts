@@ -19,7 +19,7 @@ interface Case {
   readonly sizes?: readonly [string, string];
   readonly bits?: number;
 }
-const PRECISION = 200;
+const PRECISION = 150;
 const TERMS = 9;
 const u = build.symbol('u');
 const z = build.symbol('z');

@@ -1,10 +1,10 @@
 /**
- * Rigorous enclosures of the Bessel family. Power series with proven tails (precision rises with the digits that cancel);
+ * Rigorous enclosures of Bessel and Struve functions. Power series with proven tails (precision rises with the digits that cancel);
  * for large real arguments the asymptotic series of DLMF 10.17.3, 10.17.4, 10.40.2, whose remainders are below the first omitted terms once enough terms are taken (10.17(iii), 10.40(ii)).
  */
 import { Q, type Rational } from '../../expression/index.ts';
-import { type Ball, type ComplexBall, complex, real } from '../../rigorous/index.ts';
-import { bound, complexKit, isRational, type Kit, type Parameter, parameterOf, toSet } from '../enclosure/kit.ts';
+import { type Ball, real } from '../../rigorous/index.ts';
+import { bound, isRational, type Kit, type Parameter, parameterOf, toSet } from '../enclosure/kit.ts';
 import { asymptoticSum, geometricTail, hypergeometricSum } from '../enclosure/series.ts';
 import type { Algorithm } from '../enclosure/wrap.ts';
 import { reciprocalGamma } from '../gamma/enclosure.ts';
@@ -17,7 +17,7 @@ const tooLarge = <T>(kit: Kit<T>, z: T): boolean => bound.exponent(kit.size(z)) 
 
 const plus = <T>(kit: Kit<T>, p: Parameter<T>, n: Rational): Parameter<T> => (isRational(p) ? Q.add(p, n) : { set: kit.a.add(p.set, kit.a.fromRational(n)) });
 const negate = <T>(kit: Kit<T>, p: Parameter<T>): Parameter<T> => (isRational(p) ? Q.negate(p) : { set: kit.a.negate(p.set) });
-const integerOf = <T>(p: Parameter<T>): number | null => (isRational(p) && Q.isInteger(p) && Q.compare(Q.absolute(p), q(100_000)) <= 0 ? Number(p.num) : null);
+export const integerOf = <T>(p: Parameter<T>): number | null => (isRational(p) && Q.isInteger(p) && Q.compare(Q.absolute(p), q(100_000)) <= 0 ? Number(p.num) : null);
 
 /** z^p, principal. */
 const raised = <T>(kit: Kit<T>, z: T, p: Parameter<T>): T | null => {
@@ -27,7 +27,7 @@ const raised = <T>(kit: Kit<T>, z: T, p: Parameter<T>): T | null => {
 };
 
 /** (z/2)^nu/Gamma(nu+1) 0F1(; nu+1; sign z^2/4): J (sign -1) or I (sign 1), DLMF 10.2.2 and 10.25.2. */
-function firstKind<T>(kit: Kit<T>, order: Parameter<T>, z: T, sign: 1 | -1): T | null {
+export function firstKind<T>(kit: Kit<T>, order: Parameter<T>, z: T, sign: 1 | -1): T | null {
   const { a } = kit;
   const n = integerOf(order);
   if (n !== null && n < 0) {
@@ -62,9 +62,9 @@ function modulusPhase(kit: Kit<Ball>, order: Parameter<Ball>, x: Ball): readonly
   const size = Math.abs(real.toDouble(toSet(kit, order)));
   const least = Math.max(1, Math.ceil(size / 2 - 0.25));
   const two = (offset: number) => (term: Ball, k: number): Ball => a.negate(step(step(term, 2 * k + offset), 2 * k + 1 + offset));
-  const P = asymptoticSum(kit, a.one, two(0), least);
-  const Qs = asymptoticSum(kit, step(a.one, 0), two(1), least);
-  return P === null || Qs === null ? null : [P, Qs];
+  const first = asymptoticSum(kit, a.one, two(0), least);
+  const second = asymptoticSum(kit, step(a.one, 0), two(1), least);
+  return first === null || second === null ? null : [first, second];
 }
 /** J or Y at large x > 0. */
 function oscillating(kit: Kit<Ball>, order: Parameter<Ball>, x: Ball, kind: 'J' | 'Y'): Ball | null {
@@ -158,7 +158,7 @@ function fractionalSecondKind<T>(kit: Kit<T>, order: Parameter<T>, z: T, kind: '
   if (kind === 'Y') return a.divide(a.subtract(a.multiply(up, cosine), down), sine);
   return a.divide(a.multiply(a.divideInteger(pi, 2), a.subtract(down, up)), sine);
 }
-function secondKind<T>(kit: Kit<T>, order: Parameter<T>, z: T, kind: 'Y' | 'K'): T | null {
+export function secondKind<T>(kit: Kit<T>, order: Parameter<T>, z: T, kind: 'Y' | 'K'): T | null {
   const n = integerOf(order);
   if (n === null) return fractionalSecondKind(kit, order, z, kind);
   const value = integerSecondKind(kit, Math.abs(n), z, kind);
@@ -203,98 +203,6 @@ function struve<T>(kit: Kit<T>, order: Parameter<T>, z: T, sign: 1 | -1): T | nu
   return a.divide(a.add(product, product), rootPi);
 }
 
-/** Airy functions by f and g of DLMF 9.4.1 near 0, by Bessel functions of order 1/3 and 2/3 (9.6) far out on the real line. */
-type AiryKind = 'Ai' | 'Bi' | 'AiPrime' | 'BiPrime';
-function airyNear<T>(kit: Kit<T>, kind: AiryKind, z: T): T | null {
-  const { a } = kit;
-  const prime = kind === 'AiPrime' || kind === 'BiPrime';
-  const cube = a.divideInteger(a.multiply(a.square(z), z), 9);
-  // f = 0F1(;2/3;z^3/9), g = z 0F1(;4/3;z^3/9); f' = z^2/2 0F1(;5/3;z^3/9), g' = 0F1(;1/3;z^3/9).
-  const first = hypergeometricSum(kit, [], [prime ? q(5, 3) : q(2, 3)], cube);
-  const second = hypergeometricSum(kit, [], [prime ? q(1, 3) : q(4, 3)], cube);
-  if (first === null || second === null) return null;
-  const third = a.fromRational(q(1, 3));
-  const c1 = scaleAt(kit, q(2, 3));
-  const c2 = scaleAt(kit, q(1, 3));
-  if (c1 === null || c2 === null) return null;
-  const f = a.multiply(c1, prime ? a.divideInteger(a.multiply(a.square(z), first), 2) : first);
-  const g = a.multiply(c2, prime ? second : a.multiply(z, second));
-  if (kind === 'Ai' || kind === 'AiPrime') return a.subtract(f, g);
-  const rootThree = a.sqrt(a.divide(a.one, third) ?? a.one);
-  return rootThree === null ? null : a.multiply(rootThree, a.add(f, g));
-}
-/** 3^-s/Gamma(s). */
-function scaleAt<T>(kit: Kit<T>, s: Rational): T | null {
-  const power = real.powerRational(real.fromInteger(3), Q.negate(s), kit.precision);
-  const inverse = reciprocalGamma(kit, kit.a.fromRational(s));
-  return power && inverse !== null ? kit.a.multiply(kit.fromReal(power), inverse) : null;
-}
-function airyFar(kit: Kit<Ball>, kind: AiryKind, x: Ball): Ball | null {
-  const { a } = kit;
-  const size = real.absolute(x);
-  const root = a.sqrt(size);
-  if (root === null) return null;
-  const zeta = a.divideInteger(a.multiply(a.multiply(size, root), a.fromInteger(2)), 3);
-  const prime = kind === 'AiPrime' || kind === 'BiPrime';
-  const order = q(prime ? 2 : 1, 3);
-  const rootThree = a.sqrt(a.fromInteger(3));
-  if (rootThree === null) return null;
-  if (real.isPositive(x)) {
-    if (kind === 'Ai' || kind === 'AiPrime') {
-      const value = besselK(kit, order, zeta);
-      const pi = real.pi(kit.precision);
-      if (value === null) return null;
-      // Ai = (1/pi) sqrt(x/3) K_1/3, Ai' = -(x/(pi sqrt 3)) K_2/3 (DLMF 9.6.1, 9.6.2).
-      const scaled = a.divide(a.multiply(value, prime ? size : root), a.multiply(pi, rootThree));
-      return scaled && prime ? a.negate(scaled) : scaled;
-    }
-    const up = besselI(kit, order, zeta);
-    const down = besselI(kit, Q.negate(order), zeta);
-    return up && down && a.divide(a.multiply(prime ? size : root, a.add(up, down)), rootThree);
-  }
-  const up = besselJ(kit, order, zeta);
-  const down = besselJ(kit, Q.negate(order), zeta);
-  if (up === null || down === null) return null;
-  // DLMF 9.6.5 to 9.6.8.
-  if (kind === 'Ai') return a.divideInteger(a.multiply(root, a.add(up, down)), 3);
-  if (kind === 'AiPrime') return a.divideInteger(a.multiply(size, a.subtract(up, down)), 3);
-  if (kind === 'Bi') return a.divide(a.multiply(root, a.subtract(down, up)), rootThree);
-  return a.divide(a.multiply(size, a.add(up, down)), rootThree);
-}
-const airy = (kind: AiryKind): Algorithm => ({
-  real: (kit, [x]) => {
-    if (x === undefined) return null;
-    if (real.exponentOf(x) > 3 && !real.containsZero(x)) {
-      const far = airyFar(kit, kind, x);
-      if (far !== null) return far;
-    }
-    return real.exponentOf(x) > 9 ? null : airyNear(kit, kind, x);
-  },
-  complex: (kit, [z]) => (z === undefined || bound.exponent(kit.size(z)) > 7 ? null : airyNear(kit, kind, z)),
-});
-
-/** ber + i bei = J_nu(x e^(3 pi i/4)), ker + i kei = e^(-nu pi i/2) K_nu(x e^(pi i/4)) (DLMF 10.61.1, 10.61.2). */
-function kelvin(kit: Kit<Ball>, order: Ball, x: Ball, kind: 'Ber' | 'Bei' | 'Ker' | 'Kei'): Ball | null {
-  const c = complexKit(kit.precision);
-  const s = kit.a.sqrt(kit.a.fromRational(Q.HALF));
-  if (s === null || real.exponentOf(x) > 12) return null;
-  const nu = parameterOf(order);
-  const complexOrder: Parameter<ComplexBall> = isRational(nu) ? nu : { set: complex.fromReal(order) };
-  const reach = kit.a.multiply(x, s);
-  if (kind === 'Ber' || kind === 'Bei') {
-    if (!real.isPositive(x) && integerOf(nu) === null) return null;
-    const value = firstKind(c, complexOrder, { re: real.negate(reach), im: reach }, -1);
-    return value && (kind === 'Ber' ? value.re : value.im);
-  }
-  if (!real.isPositive(x)) return null;
-  const value = secondKind(c, complexOrder, { re: reach, im: reach }, 'K');
-  const angle = kit.a.multiply(order, real.scaleByPowerOfTwo(real.pi(kit.precision), -1));
-  const [sine, cosine] = real.sinCos(angle, kit.precision);
-  if (value === null) return null;
-  const turned = c.a.multiply(value, { re: cosine, im: real.negate(sine) });
-  return kind === 'Ker' ? turned.re : turned.im;
-}
-
 type WithOrder = <T>(kit: Kit<T>, order: Parameter<T>, z: T) => T | null;
 /** The order must be real; a complex ball's order counts as a parameter only where it is one. */
 const ordered = (f: WithOrder): Algorithm => ({
@@ -305,30 +213,6 @@ const ordered = (f: WithOrder): Algorithm => ({
     return f(kit, exact && isRational(exact) ? exact : { set: nu }, z);
   },
 });
-/** Off the real axis through both conjugate directions: ber = (J(z w) + J(z w*))/2, w = e^(3 pi i/4), and so on; integer orders of ber and bei are entire. */
-function kelvinComplex(kit: Kit<ComplexBall>, nu: ComplexBall, z: ComplexBall, kind: 'Ber' | 'Bei' | 'Ker' | 'Kei'): ComplexBall | null {
-  const exact = nu.im.mid === 0n && nu.im.rad === 0n ? parameterOf(nu.re) : null;
-  const s = real.sqrt(real.scaleByPowerOfTwo(real.ONE, -1), kit.precision);
-  if (exact === null || !isRational(exact) || s === null || bound.exponent(kit.size(z)) > 12) return null;
-  const { a } = kit;
-  const first = kind === 'Ber' || kind === 'Bei';
-  const direction: ComplexBall = { re: first ? real.negate(s) : s, im: s };
-  const value = (w: ComplexBall, turn: 1 | -1): ComplexBall | null => {
-    const raw = first ? firstKind(kit, exact, a.multiply(z, w), -1) : secondKind(kit, exact, a.multiply(z, w), 'K');
-    if (raw === null || first) return raw;
-    const angle = real.multiply(nu.re, real.scaleByPowerOfTwo(real.pi(kit.precision), -1), kit.precision);
-    return a.multiply(raw, { re: real.cos(angle, kit.precision), im: turn === 1 ? real.negate(real.sin(angle, kit.precision)) : real.sin(angle, kit.precision) });
-  };
-  const [up, down] = [value(direction, 1), value(complex.conjugate(direction), -1)];
-  if (up === null || down === null) return null;
-  if (kind === 'Ber' || kind === 'Ker') return a.divideInteger(a.add(up, down), 2);
-  return a.divide(a.subtract(up, down), { re: real.ZERO, im: real.fromInteger(2) });
-}
-const kelvinAlgorithm = (kind: 'Ber' | 'Bei' | 'Ker' | 'Kei'): Algorithm => ({
-  real: (kit, [nu, x]) => (nu && x ? kelvin(kit, nu, x, kind) : null),
-  complex: (kit, [nu, z]) => (nu && z ? kelvinComplex(kit, nu, z, kind) : null),
-});
-
 export const besselAlgorithms: Readonly<Record<string, Algorithm>> = {
   besselJ: ordered(besselJ),
   besselY: ordered(besselY),
@@ -336,12 +220,4 @@ export const besselAlgorithms: Readonly<Record<string, Algorithm>> = {
   besselK: ordered(besselK),
   struveH: ordered((kit, order, z) => struve(kit, order, z, -1)),
   struveL: ordered((kit, order, z) => struve(kit, order, z, 1)),
-  airyAi: airy('Ai'),
-  airyBi: airy('Bi'),
-  airyAiPrime: airy('AiPrime'),
-  airyBiPrime: airy('BiPrime'),
-  kelvinBer: kelvinAlgorithm('Ber'),
-  kelvinBei: kelvinAlgorithm('Bei'),
-  kelvinKer: kelvinAlgorithm('Ker'),
-  kelvinKei: kelvinAlgorithm('Kei'),
 };

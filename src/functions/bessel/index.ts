@@ -4,6 +4,7 @@ import type { FunctionDescription } from '../description.ts';
 import { airyEquation, airyLocal, airyValue } from './airy.ts';
 import { besselILocal, besselJLocal, besselKLocal, besselYLocal, cylinderDerivative, cylinderEquation, cylinderValue } from './cylinder.ts';
 import { enclosed } from '../enclosure/wrap.ts';
+import { airyKelvinAlgorithms } from './airyKelvinEnclosure.ts';
 import { besselAlgorithms } from './enclosure.ts';
 import { kelvinDerivative, kelvinEquation, kelvinLocal, kelvinValue } from './kelvin.ts';
 import { besselNames as n } from './names.ts';
@@ -39,4 +40,4 @@ const descriptions: readonly FunctionDescription[] = [
   { id: 'kelvinKei', title: 'Kelvin function kei', arity: 2, names: n.kelvinKei, local: kelvinLocal('Kei'), value: kelvinValue('Kei'), derivative: kelvinDerivative('Kei'), equation: kelvinEquation('Kei'), domain: 'x > 0', source: 'DLMF 10.61.2' },
 ];
 
-export const besselFunctions = enclosed(descriptions, besselAlgorithms);
+export const besselFunctions = enclosed(descriptions, { ...besselAlgorithms, ...airyKelvinAlgorithms });

@@ -4,7 +4,7 @@ import type { FunctionDescription } from '../description.ts';
 import { argument } from '../compose.ts';
 import { enclosed } from '../enclosure/wrap.ts';
 import { barnesGLocal, barnesGValue, logBarnesGDerivative, logBarnesGLocal } from './barnes.ts';
-import { barnesAlgorithms } from '../zeta/enclosure.ts';
+import { barnesAlgorithms } from './barnesEnclosure.ts';
 import { gammaAlgorithms } from './enclosure.ts';
 import { explicitOrder, gammaLocal, gammaValue, logGammaLocal, logGammaValue, polygammaLocal, polygammaValue } from './gamma.ts';
 import { incompleteDerivative, lowerGammaLocal, lowerGammaValue, upperGammaLocal, upperGammaValue } from './incomplete.ts';

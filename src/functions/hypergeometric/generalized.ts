@@ -101,8 +101,8 @@ export function hypergeometricValue(args: readonly Expression[]): Expression | n
   for (const [i, top] of tops.entries()) {
     const j = bottoms.findIndex((bottom) => same(top, bottom));
     if (j >= 0) {
-      const call_ = rebuild(tops.filter((_, k) => k !== i), bottoms.filter((_, k) => k !== j), x);
-      return call_.kind === 'call' ? (hypergeometricValue(call_.args) ?? call_) : call_;
+      const reduced = rebuild(tops.filter((_, k) => k !== i), bottoms.filter((_, k) => k !== j), x);
+      return reduced.kind === 'call' ? (hypergeometricValue(reduced.args) ?? reduced) : reduced;
     }
   }
   const [a, b] = tops;

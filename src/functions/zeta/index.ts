@@ -6,6 +6,7 @@ import { asInteger } from '../exactForms.ts';
 import { names, subscripted } from '../naming.ts';
 import { enclosed } from '../enclosure/wrap.ts';
 import { numberAlgorithms, zetaAlgorithms } from './enclosure.ts';
+import { polylogAlgorithms } from './polylogEnclosure.ts';
 import { etaAtInteger } from './exactZeta.ts';
 import { bernoulliNumberValue, bernoulliPolynomialDerivative, bernoulliPolynomialValue, eulerNumberValue } from './numbers.ts';
 import { clausenDerivative, clausenLocal, clausenValue, debyeDerivative, debyeLocal, inverseTangentIntegralLocal, polylogDerivative, polylogLocal, polylogValue } from './polylogarithm.ts';
@@ -40,4 +41,4 @@ const descriptions: readonly FunctionDescription[] = [
   { id: 'stieltjes', title: 'Stieltjes constant gamma_n', arity: 1, names: names({ latex: [], latexForm: ([n = '']) => `\\gamma_{${n}}`, unicodeForm: ([n = '']) => `γ_${n}`, mpmath: 'stieltjes' }), value: ([n]) => (n?.kind === 'number' && n.value.num === 0n ? constant('eulerGamma') : null), source: 'DLMF 25.2.5' },
 ];
 
-export const zetaFunctions = enclosed(descriptions, { ...zetaAlgorithms, ...numberAlgorithms });
+export const zetaFunctions = enclosed(descriptions, { ...zetaAlgorithms, ...polylogAlgorithms, ...numberAlgorithms });

@@ -1,7 +1,7 @@
 /** Riemann and Hurwitz zeta functions and derivatives. Sources: DLMF 25.2, 25.4, 25.6, 25.11. */
 import { build, type Expression, Q } from '../../expression/index.ts';
 import { argument, bigO, call, euler, exp, lift, log, minus, neg, over, pi, plus, pow, q, scaled, sin, times } from '../compose.ts';
-import type { FormalSeries, FunctionDescription, LocalForm, Place } from '../description.ts';
+import type { FunctionDescription, LocalForm, Place } from '../description.ts';
 import { asInteger, asRational } from '../exactForms.ts';
 import { alternating, atInfinity, F1, F2, form, isAt, series, taylor } from '../formal.ts';
 import { polygammaTree } from '../gamma/gamma.ts';

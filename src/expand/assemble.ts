@@ -119,7 +119,8 @@ const termOf = (s: Shapes, t: RawTerm): ExpansionTerm => monomialOf(s, t);
 
 /** The size of the first term left out, without its coefficient and oscillation. */
 function remainderOf(s: Shapes, t: RawTerm): ExpansionRemainder {
-  const { power, log, scale } = monomialOf(s, { ...t, oscillation: null });
+  const prefactor = s.prefactor && { ...s.prefactor, coefficient: Q.ONE };
+  const { power, log, scale } = monomialOf({ ...s, prefactor }, { ...t, coefficient: Q.ONE, oscillation: null });
   const isPower = scale === null || !(power.kind === 'number' && Q.isZero(power.value));
   return { power: isPower ? power : null, log, scale };
 }

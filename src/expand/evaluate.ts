@@ -86,6 +86,7 @@ const notExpanded: Partial<Record<Expression['kind'], string>> = {
   relation: 'An equation or inequality is not a function to expand; choose one side of it.',
   dots: 'Dots stand for terms that are not written; write an O-term instead.',
   vector: 'Vectors are not expanded; write their components.',
+  limit: 'A limit inside a formula is not expanded; take the limit first.',
   piecewise: 'A choice between branches is not expanded; expand the branch that holds at the point.',
 };
 

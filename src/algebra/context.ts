@@ -9,6 +9,13 @@ import { addElements, elementFromMonomial, elementKey, negateElement } from './q
 import type { SignRules } from './signs.ts';
 import type { Element, Truth } from './types.ts';
 
+/** log(argument) = sum of coefficient * log kernel, principal values throughout. */
+export interface JoinedLogarithm {
+  readonly argument: Element;
+  readonly value: Element;
+  readonly parts: ReadonlyMap<number, Rational>;
+}
+
 export interface Context {
   readonly table: KernelTable;
   readonly budget: Budget;
@@ -19,6 +26,8 @@ export interface Context {
   readonly read: (e: Expression) => Element;
   /** Results of calls so far, by key. */
   readonly calls: Map<string, Element>;
+  /** Logarithms of products met so far, by the key of their split form: for writing only. */
+  readonly joined: Map<string, JoinedLogarithm>;
   readonly call: (id: string, args: readonly Element[]) => Element;
   /** Sign of an element without parameters by balls; null where it stays open or is not real. */
   readonly signOfNumber: (a: Element) => -1 | 1 | null;

@@ -42,6 +42,7 @@ export function createField(assumptions: readonly Assumption[], budget: Budget, 
     isInteger: (name) => facts.isInteger(name),
     read: (e) => fromExpression(ctx, e),
     calls: new Map(),
+    joined: new Map(),
     call: (id, args) => callFunction(ctx, id, args),
     signOfNumber(a) {
       const s = constantSign(a);
@@ -167,5 +168,6 @@ export function createField(assumptions: readonly Assumption[], budget: Budget, 
   signs.reset();
   sums.clear();
   ctx.calls.clear();
+  ctx.joined.clear();
   return field;
 }

@@ -4,6 +4,7 @@ import { constantKernel, expKernel, imaginaryKernel, integerKernel, isZeroRation
 import { compareExponents, exponentFromRational, isWhole, multiplyExponents, type Exponent } from './exponent.ts';
 import { denestedCubeRoot, denestedSquareRoot, dependentSquareRoot } from './denest.ts';
 import { factorInteger } from './integers.ts';
+import { noteLogarithm } from './joinedLogarithms.ts';
 import type { Kernel } from './kernel.ts';
 import { monomialOf, multiplyMonomials, UNIT, type Monomial } from './monomial.ts';
 import { isOnePolynomial, kernelsIn, scalePolynomial, type Polynomial } from './polynomial.ts';
@@ -302,6 +303,12 @@ const multiple = (a: Element, e: Exponent): Element => scaleElement(a, typeof e 
 
 /** log a, principal value: positive factors split off, the rest stays together. */
 export function logarithm(ctx: Context, a: Element): Element {
+  const value = splitLogarithm(ctx, a);
+  noteLogarithm(ctx, a, value);
+  return value;
+}
+
+function splitLogarithm(ctx: Context, a: Element): Element {
   requireNonZero(ctx, a);
   const parts = partsOf(a);
   let result = logOfRational(ctx, parts.content);
@@ -314,16 +321,16 @@ export function logarithm(ctx: Context, a: Element): Element {
     const sign = ctx.signs.ofKernel(kernel);
     const shape = kernel.shape;
     if (shape.kind === 'exp' && isNonNegative(sign)) result = plus(ctx, result, multiple(shape.unit, e));
-    else if (shape.kind === 'power' && isNonNegative(sign)) result = plus(ctx, result, multiple(times(ctx, shape.unit, logarithm(ctx, shape.base)), e));
+    else if (shape.kind === 'power' && isNonNegative(sign)) result = plus(ctx, result, multiple(times(ctx, shape.unit, splitLogarithm(ctx, shape.base)), e));
     else if (shape.kind === 'integer') result = plus(ctx, result, multiple(logOfRational(ctx, Q.rational(shape.value)), e));
-    else if (shape.kind === 'radicand' && isNonNegative(sign)) result = plus(ctx, result, multiple(logarithm(ctx, shape.base), e));
+    else if (shape.kind === 'radicand' && isNonNegative(sign)) result = plus(ctx, result, multiple(splitLogarithm(ctx, shape.base), e));
     else if (isNonNegative(sign)) result = plus(ctx, result, multiple(kernelElement(ctx, logKernel(ctx, kernelElement(ctx, kernel))), e));
     else if (isWhole(e) && (sign & ~(NEGATIVE | NIL)) === 0) {
       result = plus(ctx, result, multiple(kernelElement(ctx, logKernel(ctx, negateElement(kernelElement(ctx, kernel)))), e));
       if (e % 2 !== 0) negative = !negative;
     } else if (isWhole(e) && isRealSet(sign) && shape.kind !== 'exp' && shape.kind !== 'power') {
       const even = e % 2 === 0 ? e : e - 1;
-      if (even !== 0) result = plus(ctx, result, multiple(logarithm(ctx, absolute(ctx, kernelElement(ctx, kernel))), even));
+      if (even !== 0) result = plus(ctx, result, multiple(splitLogarithm(ctx, absolute(ctx, kernelElement(ctx, kernel))), even));
       if (even !== e) take(kernelElement(ctx, kernel));
     } else take(kernelElement(ctx, kernel, e));
   });
@@ -339,7 +346,7 @@ export function logarithm(ctx: Context, a: Element): Element {
         if (e % 2 !== 0) negative = !negative;
       } else if (isRealSet(sign)) {
         const even = e % 2 === 0 ? e : e - 1;
-        if (even !== 0) result = plus(ctx, result, multiple(logarithm(ctx, absolute(ctx, u)), even));
+        if (even !== 0) result = plus(ctx, result, multiple(splitLogarithm(ctx, absolute(ctx, u)), even));
         if (even !== e) take(u);
       } else take(wholePower(ctx.table, u, e));
     }

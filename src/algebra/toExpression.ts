@@ -3,10 +3,11 @@ import { build, Q, type Expression, type Rational } from '../expression/index.ts
 import { constantKernel, kernelElement, rationalOf, type Context } from './context.ts';
 import { exponentToRational, numeratorOf, denominatorOf, type Exponent } from './exponent.ts';
 import { linearFactors } from './linearFactors.ts';
+import { joinedPower, withJoinedLogarithms } from './joinedLogarithms.ts';
 import type { Kernel } from './kernel.ts';
 import { exponentIn, isUnit, monomialKey, multiplyMonomials, UNIT, withoutKernel, type Monomial } from './monomial.ts';
 import { contentOf, divideByInteger, isOnePolynomial, kernelsIn, ONE_POLYNOMIAL, shiftPolynomial, type Polynomial, type Term } from './polynomial.ts';
-import { addElements, elementKey, invertElement, isQuotient, kernelsOf, multiplyElements, negateElement, normalise, partsOf, reduceByRelations, scaleElement, type Factor, type Quotient } from './quotient.ts';
+import { addElements, elementKey, invertElement, isQuotient, kernelsOf, multiplyElements, negateElement, normalise, partsOf, reduceByRelations, scaleElement, wholePower, type Factor, type Quotient } from './quotient.ts';
 import { POSITIVE } from './signs.ts';
 import { asElement } from './split.ts';
 import { squareFreeFactors } from './squareFree.ts';
@@ -19,12 +20,15 @@ interface Power {
   readonly order: number;
   readonly base: () => Expression;
   readonly positive: boolean;
+  /** The base of a root whose sign is not known, where it is a single product or quotient, so that a number may go under the root with it. */
+  readonly open?: Element;
   exponent: Element;
 }
 
 const RANK = { imaginary: 0, radical: 1, constant: 2, parameter: 3, sum: 4, function: 5, root: 6 } as const;
 
-export function toExpression(ctx: Context, a: Element): Expression {
+export function toExpression(ctx: Context, element: Element): Expression {
+  const a = withJoinedLogarithms(ctx, element);
   if (!isQuotient(a)) return numberExpression(a);
   const cosines = inCosines(ctx, a);
   if (cosines) return cosines;
@@ -269,11 +273,13 @@ function writeProduct(ctx: Context, content: Rational, monomial: Monomial, extra
 
   joinQuotients(ctx, powers, monomial);
   joinAbsolutes(ctx, powers, monomial);
+  joinRoots(ctx, powers, monomial);
+  joinPowers(ctx, powers);
   const rankOf = (p: Power): number => (rationalOf(p.exponent) ? p.rank : Math.max(p.rank, RANK.function));
   const ordered = [...powers.values()].sort((x, y) => rankOf(x) - rankOf(y) || x.order - y.order);
   const numbers: Expression[] = [];
   for (const [q, value] of [...radicals].sort((x, y) => x[0] - y[0])) if (q !== 2) numbers.push(build.power(build.number(value), Q.rational(1, q)));
-  const root = joinedSquareRoot([...powers.values()], radicals.get(2) ?? 1n);
+  const root = joinedSquareRoot(ctx, [...powers.values()], radicals.get(2) ?? 1n);
   if (root) numbers.unshift(root);
   let placed = false;
   const place = (): void => {
@@ -309,21 +315,81 @@ function writeProduct(ctx: Context, content: Rational, monomial: Monomial, extra
 
 /**
  * Square roots of positive numbers, constants and parameters under one root: sqrt(2 pi), sqrt(a b), sqrt(2/pi); the powers used up get exponent zero.
- * Of a parameter of unknown sign one root may join a number, since sqrt(2) sqrt(a) = sqrt(2 a) for all a.
+ * One root of something of unknown sign may join them, since sqrt(2) sqrt(u) = sqrt(2 u) for all u.
  */
-function joinedSquareRoot(powers: readonly Power[], integer: bigint): Expression | null {
+function joinedSquareRoot(ctx: Context, powers: readonly Power[], integer: bigint): Expression | null {
   const candidates = powers.filter((p) => (p.rank === RANK.parameter || p.rank === RANK.constant) && p.positive);
   const above = candidates.filter((p) => isHalf(p.exponent));
-  const unknown = powers.filter((p) => p.rank === RANK.parameter && !p.positive && isHalf(p.exponent));
+  const unknown = powers.filter((p) => ((p.rank === RANK.parameter && !p.positive) || p.open !== undefined) && isHalf(p.exponent));
   const [alone] = unknown;
-  if (unknown.length === 1 && alone) above.push(alone);
-  const below = unknown.length === 0 ? candidates.filter((p) => 'num' in p.exponent && p.exponent.num === -1n && p.exponent.den === 2n) : [];
-  if (integer === 1n && above.length === 0) return null;
+  const below = unknown.length < 2 ? candidates.filter((p) => 'num' in p.exponent && p.exponent.num === -1n && p.exponent.den === 2n) : [];
+  const joins = unknown.length === 1 && alone !== undefined;
+  if (integer === 1n && above.length === 0 && (!joins || (below.length === 0 && alone.open === undefined))) return null;
+  if (joins && alone.open === undefined) above.push(alone);
   // A lone root below stays there: 1/sqrt(pi); with something above they share one: sqrt(2/pi).
   const top = build.product(...(integer === 1n ? [] : [build.number(integer)]), ...above.map((p) => p.base()));
   const bottom = build.product(...below.map((p) => p.base()));
   for (const p of [...above, ...below]) p.exponent = Q.ZERO;
-  return build.power(below.length === 0 ? top : build.quotient(top, bottom), Q.HALF);
+  if (!joins || alone.open === undefined) return build.power(below.length === 0 ? top : build.quotient(top, bottom), Q.HALF);
+  alone.exponent = Q.ZERO;
+  const inner = toExpression(ctx, alone.open);
+  if (build.isOneNumber(top) && below.length === 0) return build.power(inner, Q.HALF);
+  const [over, under] = inner.kind === 'quotient' ? [inner.numerator, inner.denominator] : [inner, null];
+  const product = build.isOneNumber(over) ? top : build.product(top, ...(over.kind === 'product' ? over.factors : [over]));
+  const divisor = [...below.map((p) => p.base()), ...(under ? (under.kind === 'product' ? under.factors : [under]) : [])];
+  return build.power(divisor.length === 0 ? product : build.quotient(product, build.product(...divisor)), Q.HALF);
+}
+
+/** The root of a product N D over |D| is written as the root of N/D, and (N D)^(1/2)/(N D) as (N D)^(-1/2). */
+function joinRoots(ctx: Context, powers: Map<string, Power>, monomial: Monomial): void {
+  for (const index of monomial.kernels) {
+    const kernel = ctx.table.kernels[index] as Kernel;
+    if (kernel.shape.kind !== 'radicand') continue;
+    const key = elementKey(kernel.shape.base);
+    const own = powers.get(key);
+    const r = own ? rationalOf(own.exponent) : null;
+    if (!own || !r || r.den === 1n) continue;
+    let base: Element = kernel.shape.base;
+    let exponent: Rational = r;
+    const parts = partsOf(base);
+    const plain = isOnePolynomial(parts.numerator);
+    if (plain && exponent.num > 0n) {
+      const factors = parts.monomial.kernels.map((k, i) => ({ power: powers.get(elementKey(kernelElement(ctx, ctx.table.kernels[k] as Kernel))), e: exponentToRational(parts.monomial.exponents[i] as Exponent) }));
+      const below = factors.every(({ power, e }) => power && !isQuotient(power.exponent) && Q.compare(power.exponent, Q.negate(e)) <= 0);
+      if (below && Q.isOne(parts.content)) {
+        exponent = Q.subtract(exponent, Q.ONE);
+        for (const { power, e } of factors) if (power) power.exponent = addElements(ctx.table, power.exponent, e);
+      }
+    }
+    for (const other of monomial.kernels) {
+      const size = ctx.table.kernels[other] as Kernel;
+      if (size.shape.kind !== 'abs') continue;
+      const bars = powers.get(elementKey(kernelElement(ctx, size)));
+      const s = bars ? rationalOf(bars.exponent) : null;
+      if (!bars || !s || s.num === 0n) continue;
+      const m = Q.divide(s, exponent);
+      if (m.den !== 1n || m.num % 2n !== 0n || m.num >= 0n) continue;
+      const single = multiplyElements(ctx.table, base, invertElement(ctx.table, size.shape.argument));
+      if (isQuotient(single) && (single.denominator.length > 0 || single.monomial.exponents.some((e) => numeratorOf(e) < 0))) continue;
+      base = multiplyElements(ctx.table, base, wholePower(ctx.table, size.shape.argument, Number(m.num)));
+      bars.exponent = Q.ZERO;
+    }
+    own.exponent = Q.ZERO;
+    const whole = base;
+    const product = isOnePolynomial(partsOf(whole).numerator) && partsOf(whole).denominator.length === 0;
+    powers.set(`root ${index}`, { rank: RANK.root, order: index, base: () => toExpression(ctx, whole), exponent, positive: false, ...(product ? { open: whole } : {}) });
+  }
+}
+
+/** 4^e pi^e |mu|^(2 e)/Delta^e is written (4 pi mu^2/Delta)^e where that power was met. */
+function joinPowers(ctx: Context, powers: Map<string, Power>): void {
+  const found = joinedPower(ctx, (key) => powers.get(key)?.exponent ?? null);
+  if (!found) return;
+  for (const key of found.keys) {
+    const p = powers.get(key);
+    if (p) p.exponent = Q.ZERO;
+  }
+  powers.set('joined', { rank: RANK.function, order: 1e6, base: () => toExpression(ctx, found.argument), exponent: found.exponent, positive: false });
 }
 
 const isHalf = (e: Element): boolean => 'num' in e && e.num === 1n && e.den === 2n;

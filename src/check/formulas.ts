@@ -24,8 +24,8 @@ export function formulasOf(text: string, language: string, options: { readonly f
   const content = readDocument(text, language, options);
   const found: FoundFormula[] = [];
   const unread: UnreadFormula[] = [];
-  const read = (span: Span, notation: 'latex' | 'plain', inline: boolean, label: string | null, quiet: boolean): boolean => {
-    const outcome = readFormula(text, notation, { start: span.start, end: span.end, macros: content.macros, joinRows: true });
+  const read = (span: Span, notation: 'latex' | 'plain', inline: boolean, label: string | null, quiet: boolean, source = text): boolean => {
+    const outcome = readFormula(source, notation, { start: span.start, end: span.end, macros: content.macros, joinRows: true });
     const mixed = outcome.ok ? foreignText(text, span, outcome.value.expression) : null;
     if (mixed !== null) {
       if (!quiet) unread.push({ ...span, reason: mixed });
@@ -40,7 +40,7 @@ export function formulasOf(text: string, language: string, options: { readonly f
   };
   for (const region of content.regions) {
     if (region.kind === 'code') continue;
-    if (region.kind === 'comment') for (const place of commentFormulas(text, region)) read(place, place.notation, true, null, true);
+    if (region.kind === 'comment') for (const place of commentFormulas(text, region)) read({ start: place.start, end: place.end }, place.notation, true, null, true, place.source);
     else if (region.kind === 'text') for (const place of proseFormulas(text, region.contentStart, region.contentEnd)) read(place, 'plain', true, null, true);
     else for (const place of region.formulas) read({ start: place.start, end: place.end }, region.language === 'plain' ? 'plain' : 'latex', region.kind === 'inline', place.label ?? region.label ?? place.tag ?? region.tag ?? null, false);
   }
@@ -70,6 +70,8 @@ function longestRun(factors: readonly Expression[], text: string): number {
 
 interface Place extends Span {
   readonly notation: 'latex' | 'plain';
+  /** The text with the marks between joined lines blanked out, where the formula goes on over several; offsets are those of the text. */
+  readonly source?: string;
 }
 
 /** Formulas in a comment: marked LaTeX where there is any, else lines with a relation. */
@@ -89,16 +91,39 @@ const RELATION = /~=|≈|∼|≃|(?<![<>=!:+\-*/])=(?!=)|\\approx|\\sim(?:eq)?(?
 /** Running text that goes on behind a formula. */
 const WORDS_AFTER = /\s(?:for|when|where|if|with|near|around|which|so|and|using|gives?|since|because|valid|while|to avoid)\s/;
 
-/** In each line with a relation, the longest stretch that is a formula. */
+/** In each line with a relation, the longest stretch that is a formula; lines that start with a relation or a sign go on with the one before. */
 function proseFormulas(text: string, from: number, to: number): readonly Place[] {
   const out: Place[] = [];
+  const lines: Span[] = [];
   for (let start = from; start < to; ) {
     const newline = text.indexOf('\n', start);
     const end = newline < 0 || newline > to ? to : newline;
-    const place = formulaInLine(text, start, end);
-    if (place) out.push(place);
+    lines.push({ start, end });
     start = end + 1;
   }
+  for (let i = 0; i < lines.length; i += 1) {
+    const first = lines[i] as Span;
+    let last = i;
+    while (lines[last + 1] && last - i < MOST_JOINED && CONTINUES.test(text.slice(lines[last + 1]?.start, lines[last + 1]?.end))) last += 1;
+    const joined = last > i ? joinedSource(text, lines.slice(i, last + 1)) : text;
+    const place = formulaInLine(joined, first.start, lines[last]?.end ?? first.end) ?? (last > i ? formulaInLine(text, first.start, first.end) : null);
+    if (place) out.push(joined === text ? place : { ...place, source: joined });
+    i = last;
+  }
+  return out;
+}
+
+const MOST_JOINED = 12;
+const LEAD = /^[\s*/!#%;>]*/;
+const CONTINUES = /^[\s*/!#%;>]*(?:=(?!=)|≈|~=|\\approx|\+|[-−](?=\s*[\w(\\]))/;
+
+/** The text with line ends and comment marks between the lines turned into spaces. */
+function joinedSource(text: string, lines: readonly Span[]): string {
+  let out = text;
+  lines.slice(1).forEach((line) => {
+    const lead = LEAD.exec(text.slice(line.start, line.end))?.[0].length ?? 0;
+    out = `${out.slice(0, line.start - 1)}${' '.repeat(lead + 1)}${out.slice(line.start + lead)}`;
+  });
   return out;
 }
 

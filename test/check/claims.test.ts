@@ -147,6 +147,11 @@ describe('documents', () => {
     expect(findings('/* small angle: cos(x) ~= 1 - x*x/2 */\n', { language: 'c' })).toMatchObject([{ verdict: 'holds' }]);
     expect(findings('# leading-order: skip\n# cos(x) ~= 1 - x*x/3\n', { language: 'python' })).toEqual([]);
   });
+  it('a formula that goes on over the lines of a comment', () => {
+    const text = '/* sinh(x) = (exp(x) - 1/exp(x))/2\n *         = x + x^3/6 + o(x^5)\n */\n';
+    expect(findings(text, { language: 'c' }).filter((f) => f.verdict === 'fails').map((f) => text.slice(f.start, f.end))).toEqual(['5']);
+    expect(findings('// cos(x) ~= 1 - x^2/2\n//         + x^4/24\n', { language: 'c' })).toMatchObject([{ verdict: 'holds' }]);
+  });
   it('bad input ends at once', () => {
     for (const text of ['', '$', '\\[ = \\]', '\\[ x = + O( \\]', `$${'('.repeat(100_000)}$`, '\\[ \\sin x = \\dots \\]', '\\[ O(x) = O(x^2) \\]']) expect(check({ text, language: 'latex' }, budget(2000)).ok, text.slice(0, 30)).toBe(true);
   });

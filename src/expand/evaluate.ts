@@ -6,13 +6,12 @@ import {
   Series, theta,
 } from '../series/index.ts';
 import { evaluateApply } from './apply.ts';
+import { DEEPEST } from './depth.ts';
 import { evaluateCall } from './calls.ts';
 import { refusePoleOf } from './described.ts';
 import { evaluateIndexed } from './sums/evaluate-sum.ts';
 import { evaluateIntegral } from './integrals/integral.ts';
 import type { Session } from './session.ts';
-
-const DEEPEST = 600;
 
 export function evaluate(s: Session, e: Expression): Multi {
   const known = s.memo.get(e);

@@ -4,6 +4,7 @@ import { attempt, type Budget, Declined, type Outcome } from '../outcome.ts';
 import { addElements, isRational, multiplyElements, plainText } from '../series/index.ts';
 import { assemble } from './assemble.ts';
 import { inCompound } from './compound.ts';
+import { requireShallow } from './depth.ts';
 import type { Expansion, ExpansionProblem } from './expansion.ts';
 import type { Direction } from './open-side.ts';
 import { radiusOf } from './radius.ts';
@@ -15,6 +16,7 @@ import { expandSide, type SideResult } from './side.ts';
  */
 export function expand(problem: ExpansionProblem, budget: Budget): Outcome<Expansion> {
   return attempt(() => {
+    requireShallow(problem.function);
     if (problem.variable.kind !== 'symbol') return inCompound(problem, (inner) => expandSymbol(inner, budget));
     return expandSymbol(problem, budget);
   });

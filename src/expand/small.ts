@@ -5,6 +5,7 @@ import { type Assumption, build, dependsOn, type Expression, Q, substitute } fro
 import { describe } from '../functions/index.ts';
 import { attempt, type Budget, Declined, type Outcome } from '../outcome.ts';
 import { add, addElements, compareExponents, type Context, exactOf, insertFormal, isRational, monomial, type Multi, scaleBy } from '../series/index.ts';
+import { requireShallow } from './depth.ts';
 import { evaluate } from './evaluate.ts';
 import type { Expansion, ExpansionTerm, SmallProblem, SmallQuantity } from './expansion.ts';
 import { factorTree, type RawTerm, rawTerms } from './flatten.ts';
@@ -17,6 +18,7 @@ import { openContext } from './open-side.ts';
  */
 export function expandSmall(problem: SmallProblem, budget: Budget): Outcome<Expansion> {
   return attempt(() => {
+    requireShallow(problem.function);
     if (problem.quantities.length === 0 || problem.quantities.some((q) => q.symbol.kind !== 'symbol')) throw new Declined('bad-request', 'Name the small quantities, each by one symbol.');
     if (problem.quantities.some((q) => Q.signOf(q.weight) <= 0)) throw new Declined('bad-request', 'The weight of a small quantity must be positive.');
     if ((problem.terms === undefined) === (problem.order === undefined)) throw new Declined('bad-request', 'Ask for a number of terms or for an order, not both.');

@@ -22,7 +22,9 @@ export const signOfExponent = (c: Context, a: Element): -1 | 0 | 1 => compareExp
 /** The failure for an element whose sign the answer depends on. */
 export function undecidedSign(c: Context, element: Element): Declined {
   if (c.field.parameters(element).includes(c.local)) return new Declined('no-expansion', 'The answer depends on the sign of an oscillating function, which changes again and again near the point; choose another point.');
-  const text = plainText(c.field.toExpression(element));
+  const written = plainText(c.field.toExpression(element));
+  // -b > 0 or -b < 0 asks the same as b > 0 or b < 0.
+  const text = written.startsWith('-') ? plainText(c.field.toExpression(c.field.negate(element))) : written;
   return c.field.parameters(element).length > 0
     ? new Declined('needs-assumption', `The answer depends on the sign of ${text}; assume ${text} > 0 or ${text} < 0.`)
     : new Declined('undecided', `The sign of ${text} could not be decided; give it as a decimal or simplify it.`);

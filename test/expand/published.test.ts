@@ -123,6 +123,12 @@ describe('declined with a reason', () => {
     expect(found.ok ? null : found.error.code).toBe(code);
     if (!found.ok) expect(found.error.message).toMatch(message);
   });
+  test('100 000 nested signs get one plain sentence', () => {
+    let tree = latex('x');
+    for (let k = 0; k < 100000; k += 1) tree = build.negation(tree);
+    const found = outcomeOf(tree);
+    expect(found.ok ? null : found.error.code).toBe('bad-request');
+  });
   test('e^(1/x) from the right is its own exact scale', () => {
     const found = expansionOf('e^{1/x}', { side: 'right' });
     expect(found.exact).toBe(true);

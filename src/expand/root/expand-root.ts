@@ -3,6 +3,7 @@ import { build, dependsOn, type Expression, Q } from '../../expression/index.ts'
 import { attempt, type Budget, Declined, type Outcome } from '../../outcome.ts';
 import { compareEventually, type Context, growth, isRational, isRealMulti, type Multi, negateElement, plainText, split } from '../../series/index.ts';
 import { assemble } from '../assemble.ts';
+import { requireShallow } from '../depth.ts';
 import type { Expansion, ExpansionProblem, RootProblem } from '../expansion.ts';
 import { type Direction, openSide } from '../open-side.ts';
 import { type SideResult, takeTerms } from '../side.ts';
@@ -17,6 +18,7 @@ import { openCurve } from './taylor.ts';
  */
 export function expandRoot(problem: RootProblem, budget: Budget): Outcome<Expansion> {
   return attempt(() => {
+    requireShallow(problem.equation);
     if (problem.unknown.kind !== 'symbol' || problem.variable.kind !== 'symbol') throw new Declined('bad-request', 'The unknown and the variable must be one symbol each.');
     if (!dependsOn(problem.equation, problem.unknown.name)) throw new Declined('bad-request', 'The equation does not contain the unknown; name another unknown.');
     if (problem.point === 'inf' || problem.point === '-inf') return join(problem, problem.point, branchesOn(problem, problem.point, budget));

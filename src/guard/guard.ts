@@ -1,11 +1,12 @@
 /** The guard of an expression: the form that serves each range of the argument, the switch between them, and the proof of the whole. */
-import { dependsOn, type Expression, freeSymbols, Q, type Rational } from '../expression/index.ts';
+import { type Assumption, build, dependsOn, freeSymbols, Q, type Rational } from '../expression/index.ts';
 import { parityOf } from '../fit/index.ts';
 import { type Budget, Declined } from '../outcome.ts';
 import { interval as doubles } from '../rigorous/index.ts';
 import { isRepresentable, powerOfTwo, roundToFormat, shortestDecimal, toPlain } from '../write/index.ts';
 import { guardCode, rowFor } from './code.ts';
 import { exactForms, type ExactForm } from './forms.ts';
+import type { Piece } from './pieces.ts';
 import { type Scan, Scanner, type Side, worstBeyond } from './region.ts';
 import { evaluationBound, seriesForm, type SeriesForm, seriesTerms, type SeriesTerms, Truncation } from './series.ts';
 import type { Guarded, GuardProblem, GuardRange } from './types.ts';
@@ -15,7 +16,7 @@ const MOST_TERMS = 16;
 /** Fewer terms are taken where more of them gain less than this. */
 const PLATEAU = 1.1;
 /** A plainer form is kept where others gain less than this. */
-const PREFERENCE = 1.15;
+const PREFERENCE = 1.4;
 
 interface Candidate {
   readonly form: ExactForm;
@@ -35,23 +36,67 @@ export function guarded(problem: GuardProblem, budget: Budget): Guarded {
   if (!dependsOn(f, variable)) throw new Declined('bad-request', 'This expression does not depend on the variable; choose one that does.');
   const scanner = new Scanner(variable, { format, library }, budget);
   const setting = settle(problem, scanner);
-  const forms = exactForms(f, variable, row, budget);
-  const candidates: Candidate[] = [];
   const shared = seriesFor(problem, setting.sides, budget);
-  for (const form of forms) {
+  const candidates: Candidate[] = [];
+  const judge = (form: ExactForm): void => {
     const sides = parityOf(f, variable) && parityOf(form.tree, variable) && setting.symmetric ? setting.sides.slice(0, 1) : setting.sides;
-    try {
-      const found = candidate(form, sides, setting, shared, problem, scanner, budget);
-      if (found) candidates.push(found);
-    } catch (error) {
-      // What was proved so far still serves when the time is up.
-      if (!(error instanceof Declined && error.failure.code === 'over-budget' && candidates.length > 0)) throw error;
-      break;
-    }
+    const found = candidate(form, sides, setting, shared, problem, scanner, budget);
+    if (found) candidates.push(found);
+  };
+  const forms = exactForms(f, signs(variable, setting), row, budget);
+  const [original] = forms;
+  if (original) judge(original);
+  try {
+    for (const form of promising(forms, setting, scanner)) judge(form);
+  } catch (error) {
+    // What was proved so far still serves when the time is up.
+    if (!(error instanceof Declined && error.failure.code === 'over-budget' && candidates.length > 0)) throw error;
   }
   const best = chosen(candidates);
   if (!best) throw new Declined('undecided', `No form of this expression could be proved accurate on [${setting.text.join(', ')}] in ${format.name}; give a smaller "interval" that leaves out its other zeros and singular points.`);
   return answer(best, candidates, problem, setting);
+}
+
+/** What the interval says of the sign of the variable. */
+function signs(variable: string, { sides }: Setting): readonly Assumption[] {
+  const [only] = sides;
+  if (sides.length !== 1 || !only || !Q.isZero(only.point)) return [];
+  return [{ kind: 'relation', left: build.symbol(variable), relation: only.direction > 0 ? '>' : '<', right: build.number(0) }];
+}
+
+/** Distances at which forms are compared before they are judged on the whole interval. */
+const PROBES = [-2, -12, -24] as const;
+const MOST_FORMS = 6;
+
+/** The expression itself and the most accurate forms at a few places; a form as good as another and dearer is left out. */
+function promising(forms: readonly ExactForm[], { sides }: Setting, scanner: Scanner): readonly ExactForm[] {
+  const [original, ...others] = forms;
+  const [side] = sides;
+  if (!original || !side) return forms;
+  const pieces: Piece[] = [];
+  const far = side.to ?? Q.multiply(Q.add(side.from, Q.ONE), powerOfTwo(12));
+  if (side.to === null) pieces.push({ kind: 'plain', ...ordered(side, Q.multiply(far, Q.rational(7, 8)), far) });
+  for (const e of PROBES) {
+    const to = Q.add(side.from, Q.multiply(Q.subtract(side.to ?? Q.add(side.from, Q.ONE), side.from), powerOfTwo(e)));
+    const from = Q.add(side.from, Q.multiply(Q.subtract(to, side.from), Q.rational(7, 8)));
+    pieces.push({ kind: 'plain', ...ordered(side, from, to) });
+  }
+  const judged = others
+    .map((form) => ({ form, bounds: pieces.map((p) => scanner.bound(form.tree, p) ?? Infinity) }))
+    .map(({ form, bounds }) => ({ form, bounds, worst: Math.max(...bounds) }))
+    .filter((j) => Math.min(...j.bounds) < 1)
+    .sort((a, b) => a.worst - b.worst || a.form.cost - b.form.cost);
+  const kept: typeof judged = [];
+  for (const j of judged) {
+    if (kept.length >= MOST_FORMS) break;
+    if (!kept.some((k) => k.form.cost <= j.form.cost && k.bounds.every((b, i) => b <= (j.bounds[i] ?? 0) * 1.02))) kept.push(j);
+  }
+  return kept.map((k) => k.form);
+}
+
+function ordered({ point, direction }: Side, from: Rational, to: Rational): { readonly low: Rational; readonly high: Rational } {
+  const [a, b] = [from, to].map((d) => Q.add(point, Q.multiply(d, Q.rational(direction)))) as [Rational, Rational];
+  return direction > 0 ? { low: a, high: b } : { low: b, high: a };
 }
 
 interface Setting {

@@ -120,7 +120,7 @@ function patched({ truncated, text }: Accused, place: Span, replacement: string)
 
 /** Every printed term is right; the O or o promises too much. */
 function orderBlame(accused: Accused, size: Size): Blame | null {
-  const { truncated, setting, notation, text } = accused;
+  const { truncated, setting, notation } = accused;
   const order = truncated.orders[0];
   if (!order?.span) return null;
   const argument = rightArgument(order, size, accused);
@@ -174,6 +174,8 @@ function termBlame(accused: Accused, difference: { readonly size: Size; readonly
     const place = printed.node.span;
     const text = right ? writeIn(notation, right) : '';
     const isWhole = printed.node === printed.value;
+    const removal = expansion && !right && isWhole ? withoutTerm(accused, place) : null;
+    if (removal) return { place: coefficientPlace(printed, setting) ?? place, message: 'The function has no term of this order.', found: patched(accused, removal, ''), fix: { ...removal, text: '' } };
     return {
       place: coefficientPlace(printed, setting) ?? place,
       message: right ? `The term of this order is ${text}.` : 'The function has no term of this order.',
@@ -188,6 +190,13 @@ function termBlame(accused: Accused, difference: { readonly size: Size; readonly
   const place = next?.node.span ?? truncated.orders[0]?.span ?? truncated.side.span;
   if (!place || !right) return null;
   return { place, message: `A term is missing: ${writeIn(notation, right)}.`, found: writeIn(notation, right), fix: null };
+}
+
+/** The term with the sign in front of it; null at the head of the sum, where its loss would leave a bare sign. */
+function withoutTerm({ text }: Accused, term: Span): Span | null {
+  if (/[-−–]/.test(text.charAt(term.start))) return /[\w)\]}!′'²³⁴⁵⁶⁷⁸⁹⁰¹ⁿ]\s*$/u.test(text.slice(0, term.start)) ? { start: term.start - (/\s*$/.exec(text.slice(0, term.start))?.[0].length ?? 0), end: term.end } : null;
+  const sign = /\s*[-−–+]\s*$/.exec(text.slice(0, term.start));
+  return sign ? { start: term.start - sign[0].length, end: term.end } : null;
 }
 
 function sameSize(t: PrintedTerm, size: Size, setting: Setting): boolean {

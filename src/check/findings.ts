@@ -14,7 +14,6 @@ import { isGridName, normalise } from './normalise.ts';
 import { notationOf } from './notation.ts';
 import type { Setting } from './context.ts';
 import { settingsFor, type Around, type Asked, type Choice } from './setting.ts';
-import { compareSizes, leading } from './size.ts';
 import { hasMarks, withoutMarks } from './truncated.ts';
 
 export interface Place {

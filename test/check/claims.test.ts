@@ -88,6 +88,7 @@ describe('the wrong piece and its repair', () => {
     ['\\[ \\sin x = x - \\frac{x^3}{6} + \\mathcal{O}(x^6) \\]', '6', '\\[ \\sin x = x - \\frac{x^3}{6} + \\mathcal{O}(x^5) \\]'],
     ['\\[ \\frac{1}{\\sqrt{1-v^2/c^2}} = 1 + \\frac{v^2}{3c^2} + O(v^4) \\]', '3', '\\[ \\frac{1}{\\sqrt{1-v^2/c^2}} = 1 + \\frac{v^2}{2c^2} + O(v^4) \\]'],
     ['\\[ \\operatorname{erf} x = \\frac{2}{\\pi}\\left(x - \\frac{x^3}{3} + \\cdots\\right) \\]', null, null],
+    ['\\[ e^{\\sin x} = 1 + x + \\frac{1}{2}x^2 - \\frac{1}{6}x^3 - \\frac{1}{8}x^4 + \\cdots \\]', '\\frac{1}{6}', '\\[ e^{\\sin x} = 1 + x + \\frac{1}{2}x^2 - \\frac{1}{8}x^4 + \\cdots \\]'],
     ['// sin(x) ≈ x − x³/5 + x⁵/120\n', '5', '// sin(x) ≈ x − x³/6 + x⁵/120\n'],
   ])('%s', (text, under, fixed) => {
     const language = text.startsWith('//') ? 'c' : 'latex';

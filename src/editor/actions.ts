@@ -126,6 +126,7 @@ export function proposalTitle(proposal: Proposal): string {
     polynomial: vscode.l10n.t('Replace by polynomial {0}', preview),
     comment: vscode.l10n.t('Insert comment "{0}" above', preview),
     helper: vscode.l10n.t('Replace by {0}', preview),
+    corrections: vscode.l10n.t('Correct all {0} claims that fail in this file', preview),
   };
   return titles[proposal.kind];
 }

@@ -43,7 +43,7 @@ export function activateWith(context: vscode.ExtensionContext, start: ClientOpti
   const memory = new Memory(context.workspaceState);
   const services: Services = { context, client, consultant: new Consultant(client, memory), memory, status, log };
   const problems = new Problems(services);
-  const pages = new Pages(services);
+  const pages = new Pages(services, problems);
   context.subscriptions.push(
     log,
     status,

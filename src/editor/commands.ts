@@ -1,14 +1,14 @@
 /** The commands, one table. */
 import * as vscode from 'vscode';
-import type { CheckAnswer, ErrorAnswer, GuardAnswer } from '../protocol.ts';
+import type { ErrorAnswer, GuardAnswer } from '../protocol.ts';
 import type { Mode } from '../webview/messages.ts';
 import type { Place, Question } from '../worker/desk/types.ts';
 import { authorQuery } from './authorQuery.ts';
 import { type Consultation, selectionOf } from './consultant.ts';
 import { applyChecked, groundOf } from './edits.ts';
-import { commentMarks, engineLanguage, isCode, isProse, serves } from './languages.ts';
+import { commentMarks, engineLanguage, isCode, isProse } from './languages.ts';
 import type { Pages } from './pages.ts';
-import type { Problems } from './problems.ts';
+import { countsOf, type Problems } from './problems.ts';
 import type { PlaceLink, Services } from './services.ts';
 import { settingsFor } from './settings.ts';
 import { countsText } from './status.ts';
@@ -210,41 +210,10 @@ async function checkDocument(room: Room): Promise<unknown> {
   if (!document) return say(vscode.l10n.t('Open a file and put the cursor on an expression first.'));
   const answer = await room.problems.check(document);
   if (!answer) return say(vscode.l10n.t('The check did not finish; try again.'));
-  return showClaims(document, answer);
-}
-
-/** Every claim with its verdict, so that silence is never mistaken for approval. */
-async function showClaims(document: vscode.TextDocument, answer: CheckAnswer): Promise<unknown> {
-  const counts = { claims: answer.findings.length, hold: 0, fail: 0, undecided: 0, unread: answer.unread.length };
-  for (const { verdict } of answer.findings) counts[verdict === 'holds' ? 'hold' : verdict === 'fails' ? 'fail' : 'undecided'] += 1;
+  const counts = countsOf(answer);
   say(countsText(counts));
-  const icon = { holds: '$(pass)', fails: '$(error)', undecided: '$(question)' } as const;
-  const text = document.getText();
-  const items = answer.findings.map((finding) => ({
-    label: `${icon[finding.verdict]} ${text.slice(finding.claim.start, finding.claim.end).replace(/\s+/g, ' ').slice(0, 100)}`,
-    description: vscode.l10n.t('line {0}', document.positionAt(finding.claim.start).line + 1) + (finding.label ? `, ${finding.label}` : ''),
-    detail: finding.reason,
-    finding,
-  }));
-  const picker = vscode.window.createQuickPick<(typeof items)[number]>();
-  picker.title = countsText(counts);
-  picker.items = items;
-  picker.matchOnDetail = true;
-  picker.matchOnDescription = true;
-  picker.onDidChangeActive(([active]) => active && reveal(document, active.finding.start, active.finding.end, true));
-  picker.onDidAccept(() => {
-    const [picked] = picker.selectedItems;
-    if (picked) reveal(document, picked.finding.start, picked.finding.end, false);
-    picker.hide();
-  });
-  picker.onDidHide(() => picker.dispose());
-  if (serves(document) && items.length > 0) picker.show();
+  await room.pages.showClaims(document, answer);
   return counts;
-}
-
-function reveal(document: vscode.TextDocument, start: number, end: number, keepFocus: boolean): void {
-  const range = new vscode.Range(document.positionAt(start), document.positionAt(end));
-  void vscode.window.showTextDocument(document, { selection: range, preserveFocus: keepFocus });
 }
 
 async function copyQuery(room: Room): Promise<unknown> {

@@ -1,11 +1,13 @@
 /** One Expansion page: what it is about, what it shows, and what its buttons do. The view and the editor tab are both such pages. */
 import * as vscode from 'vscode';
-import type { Detail, ErrorAnswer, FitAnswer, GuardAnswer } from '../protocol.ts';
+import type { CheckAnswer, Detail, ErrorAnswer, FitAnswer, GuardAnswer } from '../protocol.ts';
 import type { CodeControls, CopyKind, FromPage, HistoryEntry, Kept, Mode, PageState, Shown, ToPage } from '../webview/messages.ts';
 import type { Place, Proposal, ProposalKind, Question, TextEdit } from '../worker/desk/types.ts';
-import { proposalTitle } from './actions.ts';
+import { proposalTitle, withoutOverlap } from './actions.ts';
 import { type Consultation, selectionOf } from './consultant.ts';
-import { applyChecked, groundOf, rangeOf } from './edits.ts';
+import { applyChecked, groundOf, rangeOf, sayMovedOn } from './edits.ts';
+import { countsOf } from './problems.ts';
+import { countsText } from './status.ts';
 import { engineLanguage, isCode, serves } from './languages.ts';
 import { requestCommand } from './requestCommand.ts';
 import type { Services } from './services.ts';
@@ -34,7 +36,9 @@ export class Page implements vscode.Disposable {
   readonly #services: Services;
   readonly #webview: vscode.Webview;
   readonly #isVisible: () => boolean;
+  readonly #check: (document: vscode.TextDocument) => Promise<CheckAnswer | null>;
   readonly #listeners: vscode.Disposable[] = [];
+  #claims: readonly Place[] = [];
   #focus: Focus | null = null;
   #chosen: Question = {};
   #mode: Mode = 'expand';
@@ -52,7 +56,8 @@ export class Page implements vscode.Disposable {
   #abort: AbortController | null = null;
   #timer: ReturnType<typeof setTimeout> | undefined;
 
-  constructor(services: Services, webview: vscode.Webview, isVisible: () => boolean) {
+  constructor(services: Services, webview: vscode.Webview, isVisible: () => boolean, check: (document: vscode.TextDocument) => Promise<CheckAnswer | null>) {
+    this.#check = check;
     this.#services = services;
     this.#webview = webview;
     this.#isVisible = isVisible;
@@ -69,15 +74,23 @@ export class Page implements vscode.Disposable {
     const same = this.#focus?.uri.toString() === document.uri.toString() && this.#focus.text === text && text !== '';
     const lasting = Object.fromEntries(Object.entries(this.#chosen).filter(([key]) => LASTING.includes(key as keyof Question)));
     this.#chosen = chosen ?? (same ? this.#chosen : lasting);
-    const fresh = !same || this.#mode === 'expand';
+    const fresh = !same || this.#mode === 'expand' || this.#mode === 'claims';
     this.#focus = { uri: document.uri, place, text };
     this.#mode = mode;
-    if (mode !== 'expand' && fresh) await this.#prefill(document, place);
+    if ((mode === 'fit' || mode === 'guard') && fresh) await this.#prefill(document, place);
     await this.#refresh();
+  }
+
+  #emptyForm(): Shown {
+    return this.#mode === 'guard' ? { kind: 'guard', answer: null, controls: this.#controls } : { kind: 'fit', answer: null, controls: this.#controls };
   }
 
   /** What notes, memory and settings say about the expression fills the form; what is not said stays empty. */
   async #prefill(document: vscode.TextDocument, place: Place): Promise<void> {
+    // The form comes at once; what is known about the expression follows.
+    this.#shown = this.#emptyForm();
+    this.#proposals = [];
+    this.#post();
     const { answer, asked, candidates } = await this.#services.consultant.consult(document, place, ['reading']);
     const reading = answer.ok ? answer.reading : undefined;
     const [from, to] = asked.interval ?? ['', ''];
@@ -90,6 +103,34 @@ export class Page implements vscode.Disposable {
       point: reading?.point ?? asked.point ?? '0',
       variable: reading?.variable ?? asked.variable ?? (candidates.length === 1 ? (candidates[0] ?? '') : ''),
     };
+  }
+
+  /** Turns the page to all claims of a document, as a check found them. */
+  showClaims(document: vscode.TextDocument, answer: CheckAnswer): void {
+    this.#turn += 1;
+    this.#mode = 'claims';
+    this.#stale = null;
+    this.#consultation = null;
+    this.#ground = document.version;
+    this.#focus ??= { uri: document.uri, place: { start: 0, end: 0 }, text: '' };
+    if (this.#focus.uri.toString() !== document.uri.toString()) this.#focus = { uri: document.uri, place: { start: 0, end: 0 }, text: '' };
+    const text = document.getText();
+    this.#claims = answer.findings.map(({ start, end }) => ({ start, end }));
+    const fixes = withoutOverlap(answer.findings.flatMap((finding) => (finding.verdict === 'fails' && finding.fix ? [finding.fix] : [])));
+    this.#proposals = fixes.length === 0 ? [] : [{ kind: 'corrections', preview: String(fixes.length), edits: fixes }];
+    this.#shown = {
+      kind: 'claims',
+      summary: countsText(countsOf(answer)),
+      rows: answer.findings.map((finding) => ({
+        line: document.positionAt(finding.start).line + 1,
+        label: finding.label ?? '',
+        claim: text.slice(finding.claim.start, finding.claim.end).replace(/\s+/g, ' ').trim(),
+        verdict: finding.verdict,
+        reason: finding.reason,
+        found: finding.found,
+      })),
+    };
+    this.#post();
   }
 
   async choose(question: Question): Promise<void> {
@@ -139,6 +180,8 @@ export class Page implements vscode.Disposable {
         return this.#recall(message.index);
       case 'reveal':
         return this.#reveal();
+      case 'claim':
+        return this.#revealClaim(message.index);
       case 'cancel':
         this.#abort?.abort();
         return undefined;
@@ -147,8 +190,9 @@ export class Page implements vscode.Disposable {
 
   async #turnTo(mode: Mode): Promise<void> {
     const document = this.#document();
-    if (document && this.#focus && mode !== 'expand' && this.#mode === 'expand') await this.#prefill(document, this.#focus.place);
+    const before = this.#mode;
     this.#mode = mode;
+    if (document && this.#focus && (mode === 'fit' || mode === 'guard') && before !== 'fit' && before !== 'guard') await this.#prefill(document, this.#focus.place);
     await this.#refresh();
   }
 
@@ -208,6 +252,7 @@ export class Page implements vscode.Disposable {
     const document = this.#document();
     const focus = this.#focus;
     if (!document || !focus) return this.#post();
+    if (this.#mode === 'claims') return this.#recheck(document);
     this.#turn += 1;
     const turn = this.#turn;
     this.#busy += 1;
@@ -221,6 +266,26 @@ export class Page implements vscode.Disposable {
       this.#busy -= 1;
       this.#post();
     }
+  }
+
+  async #recheck(document: vscode.TextDocument): Promise<void> {
+    this.#busy += 1;
+    this.#post();
+    const answer = await this.#check(document).finally(() => {
+      this.#busy -= 1;
+    });
+    if (answer) this.showClaims(document, answer);
+    else this.#post();
+  }
+
+  async #revealClaim(index: number): Promise<void> {
+    const document = this.#document();
+    const place = this.#claims[index];
+    if (!document || !place || document.version !== this.#ground) return sayMovedOn();
+    const editor = await vscode.window.showTextDocument(document, { ...columnOf(document) });
+    const range = rangeOf(document, place.start, place.end);
+    editor.selection = new vscode.Selection(range.start, range.end);
+    editor.revealRange(range, vscode.TextEditorRevealType.InCenterIfOutsideViewport);
   }
 
   async #expand(document: vscode.TextDocument, focus: Focus, turn: number): Promise<void> {
@@ -293,7 +358,9 @@ export class Page implements vscode.Disposable {
             : what === 'request'
               ? requestCommand(this.#focus?.text ?? '', engineLanguageOf(this.#document()), shown.asked)
               : shown.answer.numeric.sum
-        : (shown.kind === 'fit' || shown.kind === 'guard') && shown.answer?.ok
+        : shown.kind === 'claims'
+          ? claimsReport(this.#document()?.uri.path.split('/').at(-1) ?? '', shown)
+          : (shown.kind === 'fit' || shown.kind === 'guard') && shown.answer?.ok
           ? shown.answer.code
           : null;
     if (text === null) return;
@@ -351,6 +418,12 @@ export class Page implements vscode.Disposable {
   }
 }
 
+/** Markdown for a review. */
+function claimsReport(name: string, { summary, rows }: Extract<Shown, { readonly kind: 'claims' }>): string {
+  const cell = (text: string): string => text.replaceAll('|', '\\|').replaceAll('`', "'");
+  return [`## ${name}`, summary, ['| line | verdict | claim | reason |', '| --- | --- | --- | --- |', ...rows.map((row) => `| ${row.line} | ${row.verdict} | \`${cell(row.claim)}\` | ${cell(row.reason)} |`)].join('\n')].join('\n\n');
+}
+
 /** The page shows the result itself, so its buttons need only say what is done with it. */
 function buttonLabel({ kind }: Proposal): string {
   const labels: Readonly<Record<ProposalKind, string>> = {
@@ -360,6 +433,7 @@ function buttonLabel({ kind }: Proposal): string {
     polynomial: vscode.l10n.t('Replace by polynomial'),
     comment: vscode.l10n.t('Insert comment above'),
     helper: vscode.l10n.t('Replace by a function'),
+    corrections: vscode.l10n.t('Correct all that fail'),
   };
   return labels[kind];
 }

@@ -2,7 +2,9 @@
 import * as vscode from 'vscode';
 import type { Mode } from '../webview/messages.ts';
 import type { Place, Question } from '../worker/desk/types.ts';
+import type { CheckAnswer } from '../protocol.ts';
 import { Page } from './page.ts';
+import type { Problems } from './problems.ts';
 import { pageHtml, pageRoots } from './pageHtml.ts';
 import type { Services } from './services.ts';
 
@@ -11,13 +13,15 @@ export const TAB = 'leadingOrder.page';
 
 export class Pages implements vscode.Disposable {
   readonly #services: Services;
+  readonly #problems: Problems;
   readonly #registered: vscode.Disposable;
   #view: { readonly page: Page; readonly view: vscode.WebviewView } | null = null;
   #tab: { readonly page: Page; readonly panel: vscode.WebviewPanel } | null = null;
   #waiting: ((page: Page) => void)[] = [];
 
-  constructor(services: Services) {
+  constructor(services: Services, problems: Problems) {
     this.#services = services;
+    this.#problems = problems;
     this.#registered = vscode.Disposable.from(
       vscode.window.registerWebviewViewProvider(VIEW, { resolveWebviewView: (view) => this.#resolveView(view) }),
       vscode.window.registerWebviewPanelSerializer(TAB, {
@@ -32,6 +36,11 @@ export class Pages implements vscode.Disposable {
   async show(document: vscode.TextDocument, place: Place, mode: Mode = 'expand', chosen?: Question): Promise<void> {
     const page = this.#tab?.panel.visible ? this.#tab.page : await this.#openView();
     await page.show(document, place, mode, chosen);
+  }
+
+  async showClaims(document: vscode.TextDocument, answer: CheckAnswer): Promise<void> {
+    const page = this.#tab?.panel.visible ? this.#tab.page : await this.#openView();
+    page.showClaims(document, answer);
   }
 
   async showBeside(document: vscode.TextDocument, place: Place): Promise<void> {
@@ -60,7 +69,7 @@ export class Pages implements vscode.Disposable {
 
   #resolveView(view: vscode.WebviewView): void {
     view.webview.options = { enableScripts: true, localResourceRoots: pageRoots(this.#services.context.extensionUri) };
-    const page = new Page(this.#services, view.webview, () => view.visible);
+    const page = new Page(this.#services, view.webview, () => view.visible, (document) => this.#problems.check(document));
     this.#view = { page, view };
     view.onDidDispose(() => {
       page.dispose();
@@ -73,7 +82,7 @@ export class Pages implements vscode.Disposable {
   #adopt(panel: vscode.WebviewPanel): void {
     panel.webview.options = { enableScripts: true, localResourceRoots: pageRoots(this.#services.context.extensionUri) };
     panel.iconPath = vscode.Uri.joinPath(this.#services.context.extensionUri, 'media', 'icon.png');
-    const page = new Page(this.#services, panel.webview, () => panel.visible);
+    const page = new Page(this.#services, panel.webview, () => panel.visible, (document) => this.#problems.check(document));
     this.#tab = { page, panel };
     panel.onDidDispose(() => {
       page.dispose();

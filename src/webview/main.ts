@@ -4,6 +4,7 @@ import './style.css';
 import type { Question } from '../worker/desk/types.ts';
 import { expandControls } from './controls.ts';
 import { fitSection, guardSection } from './codeSections.ts';
+import { claimsSection } from './claimsSection.ts';
 import { type Child, h } from './dom.ts';
 import { expansionSection } from './expansionSection.ts';
 import { t, useWords } from './language.ts';
@@ -74,17 +75,20 @@ function content(now: PageState): Child[] {
     ...(shown.kind === 'failure' ? failure(shown.message, shown.candidates, shown.asked) : []),
     ...(shown.kind === 'expansion' ? expansionSection(shown, into(now), Math.max(220, root.clientWidth - 2), choose) : []),
     ...(shown.kind === 'fit' ? fitSection(shown, into(now), settle) : []),
+    ...(shown.kind === 'claims' ? claimsSection(shown, into(now), (index) => send({ kind: 'claim', index }), draw) : []),
     ...(shown.kind === 'guard' ? guardSection(shown, into(now), settle) : []),
     history(now),
   ];
 }
 
 function head(now: PageState): HTMLElement {
-  const mode: Mode = now.shown.kind === 'fit' ? 'fit' : now.shown.kind === 'guard' ? 'guard' : 'expand';
+  const { kind } = now.shown;
+  const mode: Mode = kind === 'fit' || kind === 'guard' || kind === 'claims' ? kind : 'expand';
   const modes: readonly (readonly [Mode, string])[] = [
     ['expand', t('expand')],
     ['fit', t('fit')],
     ['guard', t('guard')],
+    ['claims', t('claims')],
   ];
   return h(
     'header',
@@ -118,8 +122,10 @@ function into(now: PageState): HTMLElement {
         ['code', t('copyCode')],
         ['request', t('copyRequest')],
       ]
-    : [['code', t('copyCode')]];
-  const ready = expansion || now.actions.length > 0;
+    : now.shown.kind === 'claims'
+      ? [['report', t('copyReport')]]
+      : [['code', t('copyCode')]];
+  const ready = expansion || now.shown.kind === 'claims' || now.actions.length > 0;
   return h(
     'div',
     { class: 'into' },

@@ -1,8 +1,18 @@
 /** What passes between the Expansion page and its host. Plain JSON both ways. */
-import type { ErrorAnswer, ExpandAnswer, FitAnswer, FitMeasure, GuardAnswer } from '../protocol.ts';
+import type { ErrorAnswer, ExpandAnswer, FitAnswer, FitMeasure, GuardAnswer, Verdict } from '../protocol.ts';
 import type { Question, Sources } from '../worker/desk/types.ts';
 
-export type Mode = 'expand' | 'fit' | 'guard';
+export type Mode = 'expand' | 'fit' | 'guard' | 'claims';
+
+/** One printed expansion of the document and what the check says of it. */
+export interface ClaimRow {
+  readonly line: number;
+  readonly label: string;
+  readonly claim: string;
+  readonly verdict: Verdict;
+  readonly reason: string;
+  readonly found: string;
+}
 
 /** The controls of a polynomial or a guarded form, as typed. */
 export interface CodeControls {
@@ -21,7 +31,8 @@ export type Shown =
   | { readonly kind: 'failure'; readonly message: string; readonly candidates: readonly string[]; readonly asked: Question }
   | { readonly kind: 'expansion'; readonly answer: ExpandAnswer; readonly asked: Question; readonly sources: Sources; readonly origins: Origins }
   | { readonly kind: 'fit'; readonly answer: FitAnswer | ErrorAnswer | null; readonly controls: CodeControls }
-  | { readonly kind: 'guard'; readonly answer: GuardAnswer | ErrorAnswer | null; readonly controls: CodeControls };
+  | { readonly kind: 'guard'; readonly answer: GuardAnswer | ErrorAnswer | null; readonly controls: CodeControls }
+  | { readonly kind: 'claims'; readonly summary: string; readonly rows: readonly ClaimRow[] };
 
 /** Where each control's value came from, in words. */
 export type Origins = Readonly<Partial<Record<'variable' | 'point' | 'interval' | 'tolerance' | 'terms', string>>>;
@@ -54,7 +65,7 @@ export interface Kept {
   readonly chosen: Question;
 }
 
-export type CopyKind = 'latex' | 'unicode' | 'code' | 'request';
+export type CopyKind = 'latex' | 'unicode' | 'code' | 'request' | 'report';
 
 export type FromPage =
   | { readonly kind: 'ready'; readonly kept: Kept | null }
@@ -66,6 +77,8 @@ export type FromPage =
   | { readonly kind: 'pin'; readonly pinned: boolean }
   | { readonly kind: 'recall'; readonly index: number }
   | { readonly kind: 'reveal' }
+  /** Shows a claim in the text. */
+  | { readonly kind: 'claim'; readonly index: number }
   | { readonly kind: 'cancel' };
 
 export type ToPage = { readonly kind: 'state'; readonly state: PageState; readonly kept: Kept | null };

@@ -96,6 +96,18 @@ export const WORDS = {
   switch: 'The series takes over below {0}.',
   worst: 'worst relative error',
   operations: '{0} multiplications, {1} additions',
+  claims: 'Claims',
+  all: 'all',
+  holds: 'holds',
+  fails: 'fails',
+  undecided: 'undecided',
+  show: 'show',
+  line: 'line',
+  claim: 'claim',
+  verdict: 'verdict',
+  reason: 'reason',
+  noClaims: 'No printed expansion was found in this document.',
+  copyReport: 'Report',
   notSure: 'Which quantity is small?',
 } as const;
 export type Word = keyof typeof WORDS;

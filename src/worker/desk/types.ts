@@ -57,7 +57,7 @@ export interface ConsultAnswer {
 export interface TextEdit extends Place {
   readonly text: string;
 }
-export type ProposalKind = 'after' | 'row' | 'replace' | 'polynomial' | 'comment' | 'helper';
+export type ProposalKind = 'after' | 'row' | 'replace' | 'polynomial' | 'comment' | 'helper' | 'corrections';
 /** One way to put a result into the document. Titles are the editor's; `preview` is one line of Unicode. */
 export interface Proposal {
   readonly kind: ProposalKind;

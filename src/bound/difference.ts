@@ -39,6 +39,7 @@ const MOST_PIECES = 600;
 const SAMPLES = 64;
 /** Halvings of the first piece beside a shared zero before it is given up. */
 const MOST_CUTS = 40;
+const MOST_UNKNOWN = 8;
 
 /** Proven supremum over [low, high]. Fails with `undecided` where no finite bound is found (a singularity, a zero that is not shared in a relative measure). */
 export const boundDifference = (problem: DifferenceProblem): Outcome<DifferenceBound> => attempt(() => difference(problem));
@@ -52,7 +53,12 @@ function difference(problem: DifferenceProblem): DifferenceBound {
   const slack = (problem.settled ?? 1.001) - 1;
   // Pieces know their function through an expansion; nothing else of it is looked at away from its point.
   const expansion = { function: problem.function } as Expansion;
-  const task = (x0: Rational, x1: Rational): PieceTask<ReturnType<typeof r.fromInteger>> => ({ x0: r.fromRational(x0), x1: r.fromRational(x1), expansion, sum: problem.approximation, touches: 'none' });
+  const task = (x0: Rational, x1: Rational, touches: 'lower' | 'upper' | 'none'): PieceTask<ReturnType<typeof r.fromInteger>> => ({ x0: r.fromRational(x0), x1: r.fromRational(x1), expansion, sum: problem.approximation, touches });
+  /** Both ends may be branch points of the function. */
+  const bothEnds = (x0: Rational, x1: Rational): PieceTask<ReturnType<typeof r.fromInteger>>[] => {
+    const middle = Q.divide(Q.add(x0, x1), Q.rational(2));
+    return [task(x0, middle, 'lower'), task(middle, x1, 'upper')];
+  };
   let lower = r.zero;
   let upper = r.zero;
   let pieces = 0;
@@ -64,15 +70,19 @@ function difference(problem: DifferenceProblem): DifferenceBound {
     if (y !== null) lower = r.lowerEnd(r.maximum(lower, r.lowerEnd(r.absolute(y))));
   }
   const inside = through !== undefined && Q.compare(low, through) <= 0 && Q.compare(through, high) <= 0 ? through : null;
-  if (inside === null) tasks.push(task(low, high));
+  if (inside === null) tasks.push(...bothEnds(low, high));
   else {
     for (const end of [low, high]) {
       if (Q.equal(end, inside)) continue;
       const near = besideZero(problem, inside, end, lower, n, check);
       pieces += 1;
+      if (near === null) {
+        tasks.push(...(Q.compare(inside, end) < 0 ? bothEnds(inside, end) : bothEnds(end, inside)));
+        continue;
+      }
       lower = r.lowerEnd(r.maximum(lower, near.lower));
       upper = r.upperEnd(r.maximum(upper, near.upper));
-      if (!Q.equal(near.reached, end)) tasks.push(Q.compare(near.reached, end) < 0 ? task(near.reached, end) : task(end, near.reached));
+      if (!Q.equal(near.reached, end)) tasks.push(Q.compare(near.reached, end) < 0 ? task(near.reached, end, 'upper') : task(end, near.reached, 'lower'));
     }
   }
   if (tasks.length > 0) {
@@ -104,10 +114,11 @@ function cancelledBits({ function: f, approximation, variable, low, high, measur
   return 1024;
 }
 
-/** A one-sided model that starts at the shared zero and reaches as far towards `end` as it can be proved tight. */
-function besideZero<T extends ReturnType<typeof real.fromInteger>>(problem: DifferenceProblem, zero: Rational, end: Rational, floor: T, n: Numbers<T>, check: () => void): { readonly upper: T; readonly lower: T; readonly reached: Rational } {
+/** A one-sided model that starts at the shared zero and reaches as far towards `end` as it can be proved tight; null where the function has none. */
+function besideZero<T extends ReturnType<typeof real.fromInteger>>(problem: DifferenceProblem, zero: Rational, end: Rational, floor: T, n: Numbers<T>, check: () => void): { readonly upper: T; readonly lower: T; readonly reached: Rational } | null {
   const { r } = n;
   let reached = end;
+  let unknown = 0;
   let fallback: { readonly upper: T; readonly lower: T; readonly reached: Rational } | null = null;
   for (let cut = 0; cut < MOST_CUTS; cut += 1) {
     check();
@@ -126,11 +137,14 @@ function besideZero<T extends ReturnType<typeof real.fromInteger>>(problem: Diff
       const known = r.maximum(result.lower, floor);
       if (!r.isPositive(r.subtract(result.upper, r.multiply(known, r.fromRational(Q.fromDouble(settled)))))) return found;
       fallback = found;
+    } else if (fallback === null) {
+      // No model at all: a branch point, for which pieces that touch the end serve.
+      unknown += 1;
+      if (unknown > MOST_UNKNOWN) return null;
     }
     reached = Q.divide(Q.add(zero, reached), Q.rational(2));
   }
-  if (fallback) return fallback;
-  throw new Declined('undecided', 'No bound of the error could be proved beside the zero of the function; take an interval without it.');
+  return fallback;
 }
 
 /** The polynomial as a tree for bounds: sum of c_k (x - z)^k. */

@@ -27,7 +27,7 @@ export interface Local<T> {
   readonly sign: 1 | -1;
 }
 
-const PARAMETER_LIMIT = 64;
+const PARAMETER_LIMIT = 5000;
 
 function parameterModels<T>(n: Numbers<T>, m: ModelArithmetic<T>): Map<string, Model<T>> {
   return new Map([...n.parameters].map(([name, value]) => [name, m.constant(value)] as const));

@@ -15,16 +15,18 @@ export interface Numbers<T> {
   readonly fromBall: (x: Ball) => T;
   /** Symbols with known sets: parameters under interval assumptions. */
   readonly parameters: ReadonlyMap<string, T>;
+  /** Some of them are ranges of a parameter, not values known to full precision. */
+  readonly wide: boolean;
   /** The tree for all parameter values; null where undefined. */
   readonly value: (e: Expression, extra?: ReadonlyMap<string, T>) => T | null;
 }
 
 export type ParameterBalls = ReadonlyMap<string, Ball>;
 
-function numbers<T>(base: Omit<Numbers<T>, 'parameters' | 'value'>, parameters: ParameterBalls): Numbers<T> {
+function numbers<T>(base: Omit<Numbers<T>, 'parameters' | 'value' | 'wide'>, parameters: ParameterBalls): Numbers<T> {
   const own = new Map([...parameters].map(([name, ball]) => [name, base.fromBall(ball)] as const));
   const value = (e: Expression, extra?: ReadonlyMap<string, T>): T | null => evaluateTree(e, extra ? new Map([...own, ...extra]) : own, base.trees, describe);
-  return { ...base, parameters: own, value };
+  return { ...base, parameters: own, wide: parameters.size > 0, value };
 }
 
 export const doubles = (parameters: ParameterBalls): Numbers<Interval> =>
@@ -54,3 +56,9 @@ export const ballNumbers = (precision: number, parameters: ParameterBalls): Numb
     },
     parameters,
   );
+
+/** The same numbers with further symbols, each evaluated once. */
+export function withValues<T>(n: Numbers<T>, values: ReadonlyMap<string, T>): Numbers<T> {
+  const own = new Map([...n.parameters, ...values]);
+  return { ...n, parameters: own, value: (e, extra) => evaluateTree(e, extra ? new Map([...own, ...extra]) : own, n.trees, describe) };
+}

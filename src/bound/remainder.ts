@@ -6,7 +6,7 @@ import { describe } from '../functions/index.ts';
 import { type Ball, enclose, type LogModel, logRange, type Model, real } from '../rigorous/index.ts';
 import { scaleOut } from './homogeneous.ts';
 import { denominatorOf, type Local, localModel, logModelOf, remainderAtPoint, sumOf } from './local.ts';
-import { ballNumbers, doubles, type Numbers, type ParameterBalls } from './numbers.ts';
+import { ballNumbers, doubles, type Numbers, type ParameterBalls, withValues } from './numbers.ts';
 import { type PieceTask, refinePieces, remainderAt } from './pieces.ts';
 import { provenPlace } from './singular.ts';
 import { parameterBalls, type Segment, segmentsOf } from './region.ts';
@@ -177,7 +177,28 @@ function answer(result: Result | null): RemainderBound {
 }
 const roundedUp = (q: Rational): Rational => (q.num < 0n ? Q.ZERO : q);
 
-function run<T>(n: Numbers<T>, segments: readonly Segment[], problem: BoundProblem, variable: string, check: () => void, memory: Memory): Result | null {
+/** Coefficients can be trees of thousands of nodes; here each is evaluated once and stands as a symbol in the sum. */
+function withKnownCoefficients<T>(numbers: Numbers<T>, given: readonly Segment[]): { readonly n: Numbers<T>; readonly segments: readonly Segment[] } {
+  const values = new Map<string, T>();
+  const replaced = new Map<Expansion, Expansion>();
+  for (const { expansion } of given) {
+    if (replaced.has(expansion)) continue;
+    const terms = expansion.terms.map((term, k) => {
+      if (term.coefficient.kind === 'number') return term;
+      const value = numbers.value(term.coefficient);
+      const name = `coefficient ${replaced.size}.${k}`;
+      if (value === null) return term;
+      values.set(name, value);
+      return { ...term, coefficient: build.symbol(name) };
+    });
+    replaced.set(expansion, { ...expansion, terms });
+  }
+  if (values.size === 0) return { n: numbers, segments: given };
+  return { n: withValues(numbers, values), segments: given.map((segment) => ({ ...segment, expansion: replaced.get(segment.expansion) ?? segment.expansion })) };
+}
+
+function run<T>(numbers: Numbers<T>, given: readonly Segment[], problem: BoundProblem, variable: string, check: () => void, memory: Memory): Result | null {
+  const { n, segments } = withKnownCoefficients(numbers, given);
   const { r } = n;
   const { measure } = problem;
   const length = n.precision <= 53 ? 14 : Math.min(40, 14 + Math.floor(n.precision / 16));
@@ -333,7 +354,7 @@ function atPoint<T>(segment: Segment, n: Numbers<T>, problem: BoundProblem, vari
         settledLower = r.lowerEnd(r.maximum(settledLower, result.lower));
         const limit = r.multiply(settledLower, r.fromRational({ num: BigInt(Math.round(SETTLED * 2 ** 30) - 2 ** 19), den: 1n << 30n }));
         // Sets of parameter values widen every coefficient; there the tail decides, and the box of parameters is divided instead.
-        const good = n.parameters.size > 0 ? !tailMatters(r, result) : !r.isPositive(r.subtract(result.upper, limit));
+        const good = n.wide ? !tailMatters(r, result) : !r.isPositive(r.subtract(result.upper, limit));
         if (!good && attempt < 2 && tailMatters(r, result)) {
           length += EXTRA;
           continue;

@@ -2,9 +2,9 @@
 import { build, type Expression, Q, substitute } from '../expression/index.ts';
 import { type Model, modelArithmetic } from '../rigorous/index.ts';
 import { exactNear } from './exactNear.ts';
-import { logModelOf, modelOf } from './local.ts';
+import { logModelOf, middleModel, modelOf } from './local.ts';
 import type { Numbers } from './numbers.ts';
-import { type PieceTask, remainderAt } from './pieces.ts';
+import type { PieceTask } from './pieces.ts';
 import { isExactlyZero } from './region.ts';
 import type { Measure } from './types.ts';
 
@@ -50,6 +50,9 @@ function growsLikeLogarithm<T>(r: Numbers<T>['r'], f: readonly Model<T>[]): bool
   return top !== undefined && lead !== undefined && !r.containsZero(lead) && (least < 0 || (least === 0 && top.j > 0));
 }
 
+/** The place to 15 digits. */
+const decimalPlace = (x: number): Expression => build.number(Q.fromDecimal(x.toPrecision(15)) ?? Q.fromDouble(x));
+
 /** f changes sign on a small piece while f - sum does not vanish there: the ratio is unbounded. The place is given to 15 digits. */
 function zeroBySign<T>(task: PieceTask<T>, middle: number, width: number, n: Numbers<T>, variable: string): Expression | null {
   const { r } = n;
@@ -60,8 +63,11 @@ function zeroBySign<T>(task: PieceTask<T>, middle: number, width: number, n: Num
   const [fa, fb, all] = [at(a), at(b), at(r.union(a, b))];
   if (fa === null || fb === null || all === null) return null;
   const changes = (r.isPositive(fa) && r.isNegative(fb)) || (r.isNegative(fa) && r.isPositive(fb));
-  const rest = remainderAt(r.union(a, b), task, n, { variable, measure: 'absolute' });
-  return changes && rest !== null && !r.containsZero(rest) ? build.number(Q.fromDouble(Number(middle.toPrecision(15)))) : null;
+  if (!changes) return null;
+  // f - sum by its own model on the piece: the two nearly cancel.
+  const models = middleModel(task.expansion, task.sum, a, b, n, variable, 10, () => undefined);
+  const rest = models && models.m.rangeOf(models.remainder);
+  return rest !== null && !r.containsZero(rest) ? decimalPlace(middle) : null;
 }
 
 /** A denominator changes sign on a small piece where what it divides has no zero and the rest is bounded: f has a pole there, which a bounded sum leaves. */
@@ -102,5 +108,5 @@ function poleBySign<T>(task: PieceTask<T>, middle: number, width: number, n: Num
         return false;
     }
   };
-  return hasPole(task.expansion.function) && bounded(task.sum) ? build.number(Q.fromDouble(Number(middle.toPrecision(15)))) : null;
+  return hasPole(task.expansion.function) && bounded(task.sum) ? decimalPlace(middle) : null;
 }

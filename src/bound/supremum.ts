@@ -30,7 +30,6 @@ export function supremumOfModel<T>(r: RealArithmetic<T>, g: Model<T>, options: S
   const below = (x: T, y: T): boolean => !r.isPositive(r.subtract(x, y));
   const absUpper = (x: T): T => r.upperEnd(r.absolute(x));
   const absLower = (x: T): T => r.lowerEnd(r.absolute(x));
-  const at = (k: number): T => c[k] ?? r.zero;
   const polynomial = (list: readonly T[], s: T): T => {
     let sum = r.zero;
     for (let k = list.length - 1; k >= 0; k -= 1) sum = r.add(list[k] ?? r.zero, r.multiply(s, sum));

@@ -6,7 +6,7 @@ import { describe } from '../../src/functions/index.ts';
 import { budget } from '../../src/outcome.ts';
 import { type Ball, encloseReal, real } from '../../src/rigorous/index.ts';
 
-const { call, number, power, product, quotient, sum, negation } = build;
+const { call, number, power, product, quotient, sum } = build;
 export const x = build.symbol('x');
 const BITS = 256;
 

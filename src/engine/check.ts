@@ -21,6 +21,7 @@ export async function askCheck(request: CheckRequest, tools: EngineTools, time: 
     {
       text,
       language,
+      code: tools.code,
       assumptions: assumptions.value,
       ...(variable === undefined ? {} : { variable }),
       ...(point === undefined ? {} : { point }),

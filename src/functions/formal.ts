@@ -34,7 +34,7 @@ export function ratioSeries(argument: Expression, first: Coefficient, ratio: (k:
 }
 
 /** Product of (a_i + k) over product of (b_j + k), rational where all are. */
-export function shiftedRatio(tops: readonly Coefficient[], bottoms: readonly Coefficient[], k: number): Coefficient {
+function shiftedRatio(tops: readonly Coefficient[], bottoms: readonly Coefficient[], k: number): Coefficient {
   const shift = (value: Coefficient): Coefficient => {
     if (!('kind' in value)) return Q.add(value, Q.rational(k));
     const exact = asRational(value);
@@ -74,7 +74,6 @@ export function terminationLength(tops: readonly Coefficient[]): number | null {
 export const F1 = sym('\\formal_1');
 export const F2 = sym('\\formal_2');
 export const F3 = sym('\\formal_3');
-export const F4 = sym('\\formal_4');
 const NAMES = ['\\formal_1', '\\formal_2', '\\formal_3', '\\formal_4'];
 
 /** A local form whose series are named F1, F2, ... in order. */

@@ -24,7 +24,7 @@ function hankelRatio(order: Order, k: number): Order {
   return over(minus(times(4, square(order)), odd), bottom);
 }
 /** Even (parity 0) or odd members with signs (-1)^(k div 2): P and Q of DLMF 10.17.3, in 1/x. */
-export function hankelPart(order: Order, x: Expression, parity: 0 | 1): FormalSeries {
+function hankelPart(order: Order, x: Expression, parity: 0 | 1): FormalSeries {
   const all = hankelCoefficients(order, x);
   return {
     ...all,

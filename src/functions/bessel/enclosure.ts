@@ -164,7 +164,7 @@ export function secondKind<T>(kit: Kit<T>, order: Parameter<T>, z: T, kind: 'Y' 
   const value = integerSecondKind(kit, Math.abs(n), z, kind);
   return value !== null && kind === 'Y' && n < 0 && n % 2 !== 0 ? kit.a.negate(value) : value;
 }
-export function besselY<T>(kit: Kit<T>, order: Parameter<T>, z: T): T | null {
+function besselY<T>(kit: Kit<T>, order: Parameter<T>, z: T): T | null {
   if (kit.isReal) {
     if (!real.isPositive(kit.realPart(z))) return null;
     const far = oscillating(kit as unknown as Kit<Ball>, order as unknown as Parameter<Ball>, kit.realPart(z), 'Y');

@@ -9,7 +9,7 @@ const one = (args: readonly Expression[]): Expression => args[0] ?? number(0);
 const square = (e: Expression): Expression => power(e, 2);
 
 /** sin(q pi) for denominators 1 to 6, 8, 10 and 12; DLMF Table 4.17.1 and the pentagon. */
-export function sineOfPiMultiple(q: Rational): Expression | null {
+function sineOfPiMultiple(q: Rational): Expression | null {
   let rest = Q.subtract(q, Q.multiply(Q.rational(2), Q.rational(Q.floor(Q.divide(q, Q.rational(2))))));
   let negative = false;
   if (Q.compare(rest, Q.ONE) >= 0) {

@@ -5,14 +5,12 @@ import type { FunctionDescription } from '../description.ts';
 import { complexKit, type Kit, realKit } from './kit.ts';
 
 /** An algorithm on sets of either kind. Null: not defined, or out of reach at this precision. */
-export type Generic = <T>(kit: Kit<T>, args: readonly T[]) => T | null;
 export interface Algorithm {
   readonly real?: (kit: Kit<Ball>, args: readonly Ball[]) => Ball | null;
   readonly complex?: (kit: Kit<ComplexBall>, args: readonly ComplexBall[]) => ComplexBall | null;
   /** False where the closed-form derivative is not to be used for wide arguments. */
   readonly slope?: boolean;
 }
-export const both = (f: Generic): Algorithm => ({ real: f, complex: f });
 
 /** All algorithms by id, for derivatives that need companions. */
 const ALGORITHMS = new Map<string, Algorithm>();
@@ -87,7 +85,7 @@ const SLOPE_BITS = 48;
 const place = (i: number): string => `\\argument_${i}`;
 
 /** The description with its enclosures. */
-export function withEnclosure(description: FunctionDescription, algorithm: Algorithm): FunctionDescription {
+function withEnclosure(description: FunctionDescription, algorithm: Algorithm): FunctionDescription {
   const { id, derivative } = description;
   ALGORITHMS.set(id, algorithm);
   const slopes = new Map<number, Expression | null>();
@@ -141,13 +139,6 @@ export function withEnclosure(description: FunctionDescription, algorithm: Algor
     ...(algorithm.complex ? { enclose } : {}),
   };
 }
-
-/** The direct algorithm of another function, at the kit's own precision. */
-export const directly = <T>(kit: Kit<T>, id: string, args: readonly T[]): T | null => {
-  const algorithm = ALGORITHMS.get(id);
-  const f = (kit.isReal ? algorithm?.real : algorithm?.complex) as ((k: Kit<T>, a: readonly T[]) => T | null) | undefined;
-  return f?.(kit, args) ?? null;
-};
 
 /** Every description of a list whose id has an algorithm gets its enclosures. */
 export const enclosed = (descriptions: readonly FunctionDescription[], algorithms: Readonly<Record<string, Algorithm>>): readonly FunctionDescription[] =>

@@ -155,7 +155,7 @@ export function digamma<T>(kit: Kit<T>, z: T): T | null {
 }
 
 /** psi^(n), n >= 1, by (-1)^(n+1) psi^(n)(z) = sum of n!/(z+j)^(n+1) with Euler-Maclaurin; upward recurrence reaches every z off the poles. */
-export function polygamma<T>(kit: Kit<T>, order: number, z: T): T | null {
+function polygamma<T>(kit: Kit<T>, order: number, z: T): T | null {
   const { a } = kit;
   if (order === 0) return digamma(kit, z);
   if (order < 0 || order > 400) return null;

@@ -7,7 +7,7 @@ import { alternating, F1, form, isAt, ratioSeries, series, terminationLength } f
 import { factorial, harmonicNumber } from '../sequences.ts';
 
 /** sum of (1-a)_k (-1/x)^k: Gamma(a,x) = x^(a-1) e^-x times it (DLMF 8.11.2). Ends for a = 1, 2, ... */
-export function upperSeriesAtInfinity(a: Expression, x: Expression): FormalSeries {
+function upperSeriesAtInfinity(a: Expression, x: Expression): FormalSeries {
   const exact = asRational(a);
   const top = exact ? Q.subtract(Q.ONE, exact) : minus(1, a);
   const length = terminationLength([top]);

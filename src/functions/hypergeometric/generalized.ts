@@ -7,7 +7,7 @@ import { F1, form, hypergeometricSeries, isAt, terminationLength } from '../form
 import { kummerEquation, kummerMAtInfinity, kummerMTerminates, limitFunctionAtInfinity } from './confluent.ts';
 import { gaussAtMinusInfinity, gaussAtOne, gaussValueAtOne, parameter } from './gauss.ts';
 
-export interface HypergeometricParts {
+interface HypergeometricParts {
   readonly p: number;
   readonly q: number;
   readonly tops: readonly (Rational | Expression)[];
@@ -16,7 +16,7 @@ export interface HypergeometricParts {
 }
 
 /** Null where the counts do not fit the number of arguments. */
-export function hypergeometricParts(args: readonly Expression[]): HypergeometricParts | null {
+function hypergeometricParts(args: readonly Expression[]): HypergeometricParts | null {
   const [pTree, qTree, ...rest] = args;
   const p = pTree && asInteger(pTree, 16);
   const q = qTree && asInteger(qTree, 16);

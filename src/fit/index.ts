@@ -4,3 +4,4 @@ export { formatByName, type FloatFormat, type FixedFormat, type NumberFormat } f
 export { countOperations, type Arithmetic, type Operations, type Program } from './program.ts';
 export type { FitMeasure, ProvedError } from './proof.ts';
 export { parityOf } from './target.ts';
+export { wrapCode } from './wrap.ts';

@@ -61,7 +61,16 @@ export function fitPolynomial(problem: PolynomialProblem, budget: Budget): Polyn
   const middle = roundTo(Q.divide(Q.add(low, high), Q.rational(2)), format) ?? Q.ZERO;
   if (method === 'taylor' && !atZero) return about(middle, problem, budget);
   try {
-    return about(Q.ZERO, problem, budget);
+    const plain = about(Q.ZERO, problem, budget);
+    const { evaluation, total } = plain.error;
+    if (atZero || problem.tolerance || !Q.isZero(plain.centre) || Q.compare(Q.multiply(evaluation, Q.rational(2)), total) <= 0) return plain;
+    // Rounding dominates: about the middle the powers of x are smaller.
+    try {
+      const shifted = about(middle, problem, budget);
+      return Q.compare(Q.multiply(shifted.error.total, Q.rational(3, 2)), total) < 0 ? shifted : plain;
+    } catch {
+      return plain;
+    }
   } catch (error) {
     // Far from zero the powers of x cancel: about the middle they do not, where x - middle is exact.
     if (atZero || !(error instanceof Declined) || error.failure.code === 'over-budget' || error.failure.code === 'needs-assumption') throw error;

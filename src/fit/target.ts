@@ -88,6 +88,19 @@ function valueAt(f: Expression, variable: string, x: Rational, bits: number): Re
   return null;
 }
 
+/** The limit of f at a rational point where it has no value of its own (0/0, x log x at 0), from inside [low, high]; null where the expansion gives none. */
+function limitAt(f: Expression, variable: string, x: Rational, low: Rational, bits: number, budget: Budget): ReturnType<typeof real.fromInteger> | null {
+  const side = Q.compare(x, low) > 0 ? 'left' : 'right';
+  const result = expand({ function: f, variable: build.symbol(variable), point: build.number(x), side, terms: 1, assumptions: [] }, budget);
+  if (!result.ok || result.value.prefactor) return null;
+  const [term] = result.value.terms;
+  if (!term) return real.ZERO;
+  const power = rationalOf(term.power);
+  if (!power || term.scale) return null;
+  if (power.num > 0n) return real.ZERO;
+  return power.num === 0n && term.log === 0 ? encloseReal(term.coefficient, new Map(), bits + 64, describe) : null;
+}
+
 /**
  * Prepares f on [low, high]. With `divideOut` (relative measures) zeros are divided out: a zero at 0 or at another rational z that is proven;
  * a zero that is no such number is declined. Without a zero the polynomial is in x - centre. Throws Declined with `bad-request` for free parameters and for points without a value.
@@ -109,12 +122,12 @@ export function prepareTarget(f: Expression, variable: string, low: Rational, hi
     const offset = fromFixed(u, bits);
     if (Q.isZero(offset)) {
       if (atZero) return ballToFixed(atZero, bits);
-      const here = order === 0 ? valueAt(f, variable, zero, bits) : null;
+      const here = order === 0 ? (valueAt(f, variable, zero, bits) ?? limitAt(f, variable, zero, low, bits, budget)) : null;
       if (here) return ballToFixed(here, bits);
       if (local && local.order > order) return 0n;
       throw new Declined('bad-request', 'The function has no value inside the interval; take an interval without that point.');
     }
-    const value = valueAt(f, variable, Q.add(zero, offset), bits);
+    const value = valueAt(f, variable, Q.add(zero, offset), bits) ?? limitAt(f, variable, Q.add(zero, offset), low, bits, budget);
     if (!value) throw new Declined('bad-request', `The function has no real value at ${Q.toDouble(Q.add(zero, offset))}; take an interval inside its domain.`);
     const power = real.powerInteger(real.fromRational(offset, bits + 64), order, bits + 64);
     const quotient = power && real.divide(value, power, bits + 64);

@@ -28,7 +28,7 @@ export function compileAndRun(compiler: 'gcc' | 'g++', source: string, flags: re
   return inFolder((folder) => {
     const [file, program] = [join(folder, compiler === 'gcc' ? 'program.c' : 'program.cpp'), join(folder, 'program')];
     writeFileSync(file, source);
-    execFileSync(compiler, [file, '-o', program, '-Wall', '-Werror=implicit', ...flags, '-lm'], { stdio: ['ignore', 'ignore', 'inherit'] });
+    execFileSync(compiler, [file, '-o', program, '-Wall', ...flags, '-lm'], { stdio: ['ignore', 'ignore', 'inherit'] });
     return execFileSync(program, { encoding: 'utf8' }).trim();
   });
 }

@@ -1,0 +1,85 @@
+import { describe, expect, it } from 'vitest';
+import { ask, fitAnswer } from './engine.ts';
+
+const value = (coefficients: readonly { readonly power: number; readonly value: string }[], u: number): number => coefficients.reduceRight((sum, c) => sum + Number(c.value) * u ** c.power, 0);
+
+describe('fit', () => {
+  it('finds the best line for exp on [0, 1]: error (2 - e - (1 - e) log(e - 1)) / 2 in closed form', async () => {
+    // Chebyshev's linear best approximation: slope e - 1, tangent at log(e - 1).
+    const { coefficients, bound } = await fitAnswer({ text: 'exp(x)', interval: ['0', '1'], degree: 1 });
+    const slope = Math.E - 1;
+    const error = (1 - slope + slope * Math.log(slope)) / 2;
+    expect(Number(bound.approximation)).toBeGreaterThanOrEqual(error * (1 - 1e-9));
+    expect(Number(bound.approximation)).toBeLessThan(error * 1.01);
+    expect(Number(coefficients[1]?.value)).toBeCloseTo(slope, 4);
+  });
+  it('gives x^n its Chebyshev polynomial: error 2^(1 - n) below degree n', async () => {
+    const { bound } = await fitAnswer({ text: 'x^6', interval: ['-1', '1'], degree: 5 });
+    expect(Number(bound.approximation) / 2 ** -5).toBeGreaterThanOrEqual(1 - 1e-9);
+    expect(Number(bound.approximation) / 2 ** -5).toBeLessThan(1.01);
+  });
+  it('gives 1/(x + 2) on [-1, 1] its best error (2 - sqrt(3))^n / 3 (Chebyshev, from memory)', async () => {
+    const { bound } = await fitAnswer({ text: '1/(x+2)', interval: ['-1', '1'], degree: 5 });
+    const best = (2 - Math.sqrt(3)) ** 5 / 3;
+    expect(Number(bound.approximation) / best).toBeGreaterThanOrEqual(1 - 1e-9);
+    expect(Number(bound.approximation) / best).toBeLessThan(1.01);
+  });
+  it('has coefficients that read back from decimal and hexadecimal alike', async () => {
+    const { coefficients } = await fitAnswer({ text: 'cos(x)', interval: ['-1', '1'], degree: 8, format: 'binary32' });
+    for (const { value: decimal, hex } of coefficients) {
+      const [, sign = '', digits = '', exponent = '0'] = /^(-?)0x1\.?([0-9a-f]*)p([+-]\d+)$/.exec(hex) ?? [];
+      const read = (sign ? -1 : 1) * (1 + (digits === '' ? 0 : parseInt(digits, 16) / 16 ** digits.length)) * 2 ** Number(exponent);
+      expect(Math.fround(Number(decimal))).toBe(read);
+    }
+  });
+  it('keeps the tolerance with the least degree, and one degree less does not', async () => {
+    const within = await fitAnswer({ text: 'exp(x)', interval: ['-1/2', '1/2'], tolerance: 1e-6 });
+    expect(Number(within.bound.total)).toBeLessThanOrEqual(1e-6);
+    const less = await fitAnswer({ text: 'exp(x)', interval: ['-1/2', '1/2'], degree: within.degree - 1 });
+    expect(Number(less.bound.approximation)).toBeGreaterThan(1e-6);
+    expect(within.taylorDegree).toBeGreaterThanOrEqual(within.degree);
+  });
+  it('bounds what doubles see for truncated, economized and best polynomials, in this order', async () => {
+    const errors: number[] = [];
+    for (const method of ['taylor', 'economized', 'minimax']) {
+      const { coefficients, bound } = await fitAnswer({ text: 'exp(x)', interval: ['-1', '1'], degree: 5, method });
+      let worst = 0;
+      for (let k = 0; k <= 2000; k += 1) worst = Math.max(worst, Math.abs(Math.exp(-1 + k / 1000) - value(coefficients, -1 + k / 1000)));
+      expect(worst).toBeLessThanOrEqual(Number(bound.total));
+      expect(Number(bound.total)).toBeLessThan(worst * 1.02);
+      errors.push(Number(bound.total));
+    }
+    expect(errors[0]).toBeGreaterThan(errors[1] ?? 0);
+    expect(errors[1]).toBeGreaterThan((errors[2] ?? 0) * 0.999);
+  });
+  it('factors out a zero that is a float, in x - centre', async () => {
+    const answer = await fitAnswer({ text: 'log(x)', interval: ['3/4', '3/2'], measure: 'relative', tolerance: 1e-6, format: 'binary32' });
+    expect(answer.centre).toBe('1');
+    expect(answer.coefficients[0]?.power).toBe(1);
+    expect(answer.code).toMatch(/x - 1\.0f/);
+  });
+  it('covers an end that is a branch point', async () => {
+    const { bound, coefficients } = await fitAnswer({ text: 'sqrt(x)', interval: ['0', '1'], degree: 4 });
+    expect(Math.abs(value(coefficients, 0))).toBeLessThanOrEqual(Number(bound.total));
+  });
+  it.each([
+    [{ text: 'cos(x)', interval: ['0', '3'], measure: 'relative', tolerance: 1e-6 }, 'bad-request', /no float/],
+    [{ text: 'sin(x)', interval: ['1', '1'], degree: 3 }, 'bad-request', /two different ends/],
+    [{ text: 'sin(x)', interval: ['0', 'inf'], degree: 3 }, 'bad-request', /finite/],
+    [{ text: 'sin(x)', interval: ['0', '1'] }, 'bad-request', /tolerance.*degree/],
+    [{ text: 'sin(a*x)', variable: 'x', interval: ['0', '1'], degree: 3 }, 'needs-assumption', /value for a/],
+    [{ text: '1/x', interval: ['-1', '1'], degree: 3 }, 'bad-request', /no value|singular|smaller/],
+    [{ text: 'log(x)', interval: ['-2', '-1'], degree: 3 }, 'bad-request', /no real value/],
+    [{ text: 'exp(x)', interval: ['-1', '1'], tolerance: 1e-9, format: 'binary32' }, 'bad-request', /wider format/],
+    [{ text: 'exp(x)', interval: ['-1', '1'], degree: 3, emit: 'python', contraction: 'fma' }, 'bad-request', /fused/],
+    [{ text: 'exp(x)', interval: ['-1', '1'], degree: 3, emit: 'cobol' }, 'bad-request', /language/],
+    [{ text: 'exp(x)', interval: ['-1', '1'], degree: 3, format: 'binary8' }, 'bad-request', /format/],
+  ])('declines %j', async (request, code, message) => {
+    const answer = await ask(request);
+    expect(answer.ok).toBe(false);
+    if (!answer.ok) {
+      expect(answer.error.code).toBe(code);
+      expect(answer.error.message).toMatch(message);
+    }
+  });
+});

@@ -1,5 +1,5 @@
 /** What the engine needs from its host, and what it keeps between requests. It has no file system of its own. */
-import { CodeReader } from '../read/code/index.ts';
+import { CodeReader } from '../read/index.ts';
 
 export interface EngineResources {
   /** Bytes of a bundled file (a grammar, the parser runtime) by name. Rejects where there is no such file. */

@@ -4,8 +4,8 @@ import { Declined, type Budget } from '../outcome.ts';
 import type { FunctionDescription } from '../functions/description.ts';
 import type { Kernel, KernelShape, KernelTable } from './kernel.ts';
 import { monomialOf, UNIT } from './monomial.ts';
-import type { Exponent } from './exponent.ts';
-import { addElements, elementFromMonomial, elementKey, negateElement } from './quotient.ts';
+import { compareExponents, type Exponent } from './exponent.ts';
+import { addElements, elementFromMonomial, elementKey, isQuotient, negateElement, normalise } from './quotient.ts';
 import type { SignRules } from './signs.ts';
 import type { Element, Truth } from './types.ts';
 
@@ -62,7 +62,7 @@ export const logKernel = (ctx: Context, argument: Element): Kernel => ctx.table.
 
 /** The call as a kernel; an equal argument seen before, though in another form, gives the same kernel. */
 export function callKernel(ctx: Context, id: string, args: readonly Element[]): Kernel {
-  const key = `${id}(${args.map(elementKey).join(', ')})`;
+  const key = callKey(id, args);
   const known = ctx.table.find(key);
   if (known) return known;
   for (const k of ctx.table.kernels) {
@@ -75,13 +75,31 @@ export function callKernel(ctx: Context, id: string, args: readonly Element[]): 
   }
   const kernel = ctx.table.intern(key, () => ({ shape: { kind: 'call', id, args } }));
   const partner = PARTNERS[id];
-  const other = partner ? ctx.table.find(`${partner}(${args.map(elementKey).join(', ')})`) : undefined;
+  const other = partner ? ctx.table.find(callKey(partner, args)) : undefined;
   if (other) {
     const [sine, cosine] = id === 'sin' || id === 'cosh' ? [kernel.index, other.index] : [other.index, kernel.index];
     ctx.table.circles.push({ sine, cosine, factor: id === 'sin' || id === 'cos' ? -1n : 1n });
   }
   return kernel;
 }
+
+/** a with 1 - sin^2 = cos^2 and its kin applied where that shortens it, also where the partner of a function was not met before: a root or logarithm then sees the square. */
+export function withSquaresJoined(ctx: Context, a: Element): Element {
+  if (!isQuotient(a) || a.numerator.length < 2) return a;
+  let involved = false;
+  for (const t of a.numerator) {
+    t.monomial.kernels.forEach((index, i) => {
+      const { shape } = ctx.table.kernels[index] as Kernel;
+      const partner = shape.kind === 'call' ? PARTNERS[shape.id] : undefined;
+      if (shape.kind !== 'call' || partner === undefined || compareExponents(t.monomial.exponents[i] as Exponent, 2) < 0) return;
+      callKernel(ctx, partner, shape.args);
+      involved = true;
+    });
+  }
+  return involved ? normalise(ctx.table, a.content, a.monomial, a.numerator, a.denominator, true) : a;
+}
+
+const callKey = (id: string, args: readonly Element[]): string => `${id}(${args.map(elementKey).join(', ')})`;
 
 const PARTNERS: Readonly<Record<string, string>> = { sin: 'cos', cos: 'sin', sinh: 'cosh', cosh: 'sinh' };
 

@@ -123,6 +123,8 @@ function hyperbolicSine(ctx: Context, a: Element): Element {
   if (isLogarithmic(ctx, a)) return scaleElement(plus(ctx, exponential(ctx, a), negateElement(exponential(ctx, negateElement(a)))), Q.HALF);
   const c = argumentOf(ctx, a, 'acosh');
   if (c) return times(ctx, sqrt(ctx, plus(ctx, c, Q.MINUS_ONE)), sqrt(ctx, plus(ctx, c, Q.ONE)));
+  const t = argumentOf(ctx, a, 'atanh');
+  if (t) return divideElements(ctx, t, rootsAroundOne(ctx, t));
   return opaque(ctx, 'sinh', [a]);
 }
 function hyperbolicCosine(ctx: Context, a: Element): Element {
@@ -135,8 +137,12 @@ function hyperbolicCosine(ctx: Context, a: Element): Element {
   if (isLogarithmic(ctx, a)) return scaleElement(plus(ctx, exponential(ctx, a), exponential(ctx, negateElement(a))), Q.HALF);
   const s = argumentOf(ctx, a, 'asinh');
   if (s) return sqrt(ctx, plus(ctx, Q.ONE, squared(ctx, s)));
+  const t = argumentOf(ctx, a, 'atanh');
+  if (t) return divideElements(ctx, Q.ONE, rootsAroundOne(ctx, t));
   return opaque(ctx, 'cosh', [a]);
 }
+/** sqrt(1 + t) sqrt(1 - t) = 1/cosh(artanh t) for all t, from DLMF 4.37.24. */
+const rootsAroundOne = (ctx: Context, t: Element): Element => times(ctx, sqrt(ctx, plus(ctx, Q.ONE, t)), sqrt(ctx, plus(ctx, Q.ONE, negateElement(t))));
 
 /** Whether a is a sum of rational multiples of logarithms, so that exp(a) is algebraic. */
 function isLogarithmic(ctx: Context, a: Element): boolean {
@@ -184,13 +190,54 @@ function arcSine(ctx: Context, a: Element): Element {
     if (mirrored) return scaleElement(pi(ctx), Q.negate(mirrored));
   }
   if (isNegativeForm(a) && !mayLieOnCut(ctx, a, 'real')) return negateElement(arcSine(ctx, negateElement(a)));
-  return opaque(ctx, 'asin', [a]);
+  return undoneSine(ctx, a) ?? opaque(ctx, 'asin', [a]);
 }
+
+/** asin(sin b) and asin(cos b) = asin(sin(pi/2 - b)) for a real number b: its distance from the nearest multiple of pi, with the sign of that; else null. */
+function undoneSine(ctx: Context, a: Element): Element | null {
+  const b = argumentOf(ctx, a, 'sin');
+  const c = b ? null : argumentOf(ctx, a, 'cos');
+  const angle = b ?? (c ? plus(ctx, scaleElement(pi(ctx), Q.HALF), negateElement(c)) : null);
+  const turn = angle && nearestTurn(ctx, angle);
+  if (!turn) return null;
+  return turn.count % 2n === 0n ? turn.rest : negateElement(turn.rest);
+}
+
+/** angle = count * pi + rest with |rest| < pi/2 proven by balls; null where the angle is no real number or lies at the border. */
+function nearestTurn(ctx: Context, angle: Element): { readonly count: bigint; readonly rest: Element } | null {
+  const sign = (x: Element): -1 | 1 | null => (isQuotient(x) ? ctx.signOfNumber(x) : x.num > 0n ? 1 : -1);
+  const half = scaleElement(pi(ctx), Q.HALF);
+  const above = (count: bigint): -1 | 1 | null => sign(plus(ctx, plus(ctx, angle, scaleElement(pi(ctx), Q.rational(-count))), half));
+  if (above(0n) === null) return null;
+  // above(n) is 1 for n up to the count that is looked for, and -1 beyond.
+  let low = 0n;
+  let high = 0n;
+  for (let step = 1n; above(low) === -1; step *= 2n) {
+    if (step > LARGEST_TURN) return null;
+    low -= step;
+  }
+  for (let step = 1n; above(high) === 1; step *= 2n) {
+    if (step > LARGEST_TURN) return null;
+    high += step;
+  }
+  while (high - low > 1n) {
+    const middle = (low + high) / 2n;
+    const side = above(middle);
+    if (side === null) return null;
+    if (side === 1) low = middle;
+    else high = middle;
+  }
+  if (above(low) !== 1 || above(high) !== -1) return null;
+  return { count: low, rest: plus(ctx, angle, scaleElement(pi(ctx), Q.rational(-low))) };
+}
+const LARGEST_TURN = 1n << 40n;
 function arcCosine(ctx: Context, a: Element): Element {
   const sine = arcSine(ctx, a);
   const half = scaleElement(pi(ctx), Q.HALF);
   const { coefficient, rest } = multipleOfKernel(ctx, sine, constantKernel(ctx, 'pi').index);
   if (isZeroRational(rest)) return plus(ctx, half, scaleElement(pi(ctx), Q.negate(coefficient)));
+  const undone = undoneSine(ctx, a) ?? undoneSine(ctx, negateElement(a));
+  if (undone) return plus(ctx, half, negateElement(sine));
   return opaque(ctx, 'acos', [a]);
 }
 function arcTangent(ctx: Context, a: Element): Element {
@@ -206,7 +253,21 @@ function arcTangent(ctx: Context, a: Element): Element {
     if (mirrored) return scaleElement(pi(ctx), Q.negate(mirrored));
   }
   if (isNegativeForm(a) && !mayLieOnCut(ctx, a, 'imaginary')) return negateElement(arcTangent(ctx, negateElement(a)));
+  const angle = argumentOfTangent(ctx, a);
+  const turn = angle && nearestTurn(ctx, angle);
+  if (turn) return turn.rest;
   return opaque(ctx, 'atan', [a]);
+}
+
+/** b where a = sin(b)/cos(b); else null. */
+function argumentOfTangent(ctx: Context, a: Element): Element | null {
+  if (!isQuotient(a) || a.monomial.kernels.length !== 2) return null;
+  for (const index of a.monomial.kernels) {
+    const { shape } = ctx.table.kernels[index] as Kernel;
+    const b = shape.kind === 'call' && shape.id === 'sin' ? shape.args[0] : undefined;
+    if (b !== undefined && isZeroRational(plus(ctx, a, negateElement(divideElements(ctx, sine(ctx, b), cosine(ctx, b)))))) return b;
+  }
+  return null;
 }
 
 /** Inverse hyperbolic functions of numbers are logarithms; of anything else they stay as written. */

@@ -1,6 +1,6 @@
 /** Powers, exponentials and logarithms with principal branches. */
 import { Q, type Rational } from '../expression/index.ts';
-import { constantKernel, expKernel, imaginaryKernel, integerKernel, isZeroRational, kernelElement, logKernel, minus, powerKernel, rationalOf, undecided, type Context } from './context.ts';
+import { constantKernel, expKernel, imaginaryKernel, integerKernel, isZeroRational, kernelElement, logKernel, minus, powerKernel, rationalOf, undecided, withSquaresJoined, type Context } from './context.ts';
 import { compareExponents, exponentFromRational, isWhole, multiplyExponents, type Exponent } from './exponent.ts';
 import { denestedCubeRoot, denestedSquareRoot, dependentSquareRoot } from './denest.ts';
 import { factorInteger } from './integers.ts';
@@ -69,7 +69,8 @@ function absOf(ctx: Context, u: Element): Element {
 }
 
 /** a^r, principal value. */
-export function rationalPower(ctx: Context, a: Element, r: Rational): Element {
+export function rationalPower(ctx: Context, base: Element, r: Rational): Element {
+  const a = r.den === 1n ? base : withSquaresJoined(ctx, base);
   if (r.den === 1n) {
     const n = Number(r.num);
     if (n < 0) requireNonZero(ctx, a);
@@ -127,8 +128,7 @@ export function rationalPower(ctx: Context, a: Element, r: Rational): Element {
     const sign = (open.num < 0n) !== negative;
     return sign ? times(ctx, result, rootOfUnity(ctx, r)) : result;
   }
-  const base = negative ? negateElement(open) : open;
-  return times(ctx, result, openPower(ctx, base, r, exponent));
+  return times(ctx, result, openPower(ctx, negative ? negateElement(open) : open, r, exponent));
 }
 
 /** u^r for a non-negative element without denominator. */
@@ -303,7 +303,7 @@ const multiple = (a: Element, e: Exponent): Element => scaleElement(a, typeof e 
 
 /** log a, principal value: positive factors split off, the rest stays together. */
 export function logarithm(ctx: Context, a: Element): Element {
-  const value = splitLogarithm(ctx, a);
+  const value = splitLogarithm(ctx, withSquaresJoined(ctx, a));
   noteLogarithm(ctx, a, value);
   return value;
 }

@@ -176,21 +176,23 @@ function shortenByCircles(table: KernelTable, f: Polynomial): Polynomial {
   return best;
 }
 
-/** kernel^2 replaced by a + b other^2 throughout. */
+/** kernel^2 replaced by a + b other^2 throughout, by Horner's rule in kernel^2. */
 export function replaceSquare(f: Polynomial, kernel: number, [a, b]: readonly [bigint, bigint], other: number): Polynomial {
-  const value: Polynomial = [
-    { monomial: monomialOf(other, 2), coefficient: b },
-    { monomial: UNIT, coefficient: a },
-  ];
-  let result: Polynomial = [];
-  const rest: Term[] = [];
+  const byCount: Term[][] = [];
   for (const t of f) {
     const e = exponentIn(t.monomial, kernel);
     const count = isWhole(e) && e >= 2 ? Math.floor(e / 2) : 0;
-    if (count === 0) rest.push(t);
-    else result = combine(result, 1n, multiplyPolynomials([{ monomial: multiplyMonomials(t.monomial, monomialOf(kernel, -2 * count)), coefficient: t.coefficient }], powerOfPolynomial(value, count)), 1n);
+    while (byCount.length <= count) byCount.push([]);
+    byCount[count]?.push(count === 0 ? t : { monomial: multiplyMonomials(t.monomial, monomialOf(kernel, -2 * count)), coefficient: t.coefficient });
   }
-  return combine(result, 1n, rest, 1n);
+  const square = monomialOf(other, 2);
+  let result: Polynomial = [];
+  for (let count = byCount.length - 1; count >= 0; count -= 1) {
+    if (result.length > 0) result = combine(shiftPolynomial(result, square), b, result, a);
+    const own = byCount[count] ?? [];
+    if (own.length > 0) result = combine(result, 1n, count === 0 ? own : collect(own), 1n);
+  }
+  return result;
 }
 
 /** Exponents of a monomial brought into range; what leaves it becomes content, numerator or denominator. */
@@ -298,6 +300,7 @@ export function insertFactor(table: KernelTable, factors: readonly Factor[], pol
     if (f.polynomial.length === polynomial.length && polynomialKey(f.polynomial) === polynomialKey(polynomial)) {
       return factors.map((x, j) => (j === i ? { polynomial: x.polynomial, exponent: x.exponent + exponent } : x));
     }
+    if (isPlainlyIrreducible(f.polynomial) && isPlainlyIrreducible(polynomial)) continue;
     const common = gcdPolynomials(f.polynomial, polynomial, table.check);
     if (common.length < 2) continue;
     const a = divideExactly(f.polynomial, common);
@@ -309,6 +312,10 @@ export function insertFactor(table: KernelTable, factors: readonly Factor[], pol
   }
   return [...factors, { polynomial, exponent }];
 }
+
+/** c K + rest with K alone in its term and absent from the rest: a primitive polynomial of this form has no factors. */
+const isPlainlyIrreducible = (f: Polynomial): boolean =>
+  f.length < 9 && f.some((t) => t.monomial.kernels.length === 1 && t.monomial.exponents[0] === 1 && f.every((u) => u === t || !u.monomial.kernels.includes(t.monomial.kernels[0] as number)));
 
 export function negateElement(a: Element): Element {
   return isQuotient(a) ? { compound: 'quotient', content: Q.negate(a.content), monomial: a.monomial, numerator: a.numerator, denominator: a.denominator } : Q.negate(a);

@@ -41,6 +41,12 @@ function inverseOfItself(s: Session, e: CallNode, evaluate: Evaluate): Multi | n
   const [inner] = e.args;
   const function_ = inverses[e.function];
   if (!inner || !function_ || e.args.length !== 1) return null;
+  // acos(sin u) = pi/2 - asin(sin u) and asin(cos u) = pi/2 - acos(cos u), DLMF 4.23.19.
+  const complement = inner.kind === 'call' && ((e.function === 'acos' && inner.function === 'sin') || (e.function === 'asin' && inner.function === 'cos'));
+  if (complement) {
+    const other = inverseOfItself(s, { ...e, function: e.function === 'acos' ? 'asin' : 'acos' }, evaluate);
+    return other === null ? null : subtract(c, c.field.fromExpression(build.quotient(build.constant('pi'), build.number(2))), other);
+  }
   const argument = inner.kind === 'call' && inner.function === function_ && inner.args.length === 1 ? inner.args[0] : function_ === 'exp' && inner.kind === 'power' && inner.base.kind === 'constant' && inner.base.name === 'e' ? inner.exponent : undefined;
   if (!argument) return null;
   const u = evaluate(s, argument);

@@ -83,7 +83,8 @@ export async function serveWorkbench({ folder, port, settings = {}, editors = []
     folderPath: folder,
     ...(suite ? { extensionTestsPath: path.join(extension, suite) } : {}),
   }).finally(() => {
-    console.log = quiet;
+    // One line of the server's own at every page load says nothing to a user.
+    console.log = (...said) => void (said[0] === 'Using ESM loader:' || quiet(...said));
   });
   const extra = {
     configurationDefaults: { ...DEFAULTS, ...settings },
@@ -91,6 +92,8 @@ export async function serveWorkbench({ folder, port, settings = {}, editors = []
   };
   const front = http.createServer((request, response) => {
     const page = request.url === '/' || request.url?.startsWith('/?');
+    // The page asks for a file of messages that this build of the workbench has inside its script.
+    if (request.url?.endsWith('/out/nls.messages.js')) return void response.writeHead(200, { 'content-type': 'text/javascript' }).end();
     const headers = { ...request.headers, ...(page ? { 'accept-encoding': 'identity' } : {}) };
     const upstream = http.request({ host: '127.0.0.1', port: inner, method: request.method, path: request.url, headers }, (answer) => {
       if (!page) {

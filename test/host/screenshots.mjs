@@ -34,8 +34,13 @@ const SCENES = {
 
 SCENES.hover = async (page) => {
   await select(page, NOTE, SAG);
-  await hoverAtCursor(page, 'u³/24');
-  await page.locator('.monaco-hover img[src^="data:image/svg"]').first().waitFor({ timeout: 10_000 });
+  const picture = page.locator('.monaco-hover img[src^="data:image/svg"]:visible').first();
+  // On a cold start the text comes first, without the picture.
+  for (let i = 0; i < 8 && !(await picture.isVisible()); i += 1) {
+    await closeHover(page);
+    await hoverAtCursor(page, 'u³/24');
+    await picture.waitFor({ timeout: 1500 }).catch(() => {});
+  }
   await pause(400);
   return around(page, '.monaco-hover:visible', { left: 60, top: 24, right: 60, bottom: 60, width: 620 });
 };

@@ -253,6 +253,15 @@ export interface FitBound {
   readonly measure: FitMeasure;
   readonly subnormal?: string;
 }
+export interface FitPieceAnswer {
+  readonly from: string;
+  readonly to: string;
+  readonly coefficients: readonly CoefficientAnswer[];
+  readonly degree: number;
+  readonly centre?: string;
+  /** Proven total error on this piece, in the measure. */
+  readonly bound: string;
+}
 export interface FitAnswer {
   readonly id?: string | number;
   readonly ok: true;
@@ -266,6 +275,8 @@ export interface FitAnswer {
   readonly imports?: readonly string[];
   /** The polynomial is in x - centre, a float; absent for 0. */
   readonly centre?: string;
+  /** Where the interval was split: the polynomials in ascending order. `coefficients` and `centre` above are then those of the first one, `degree` and `bound` the largest. */
+  readonly pieces?: readonly FitPieceAnswer[];
   readonly operations?: { readonly multiplications: number; readonly additions: number; readonly fused: number };
 }
 

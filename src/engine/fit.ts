@@ -5,7 +5,7 @@ import { build, type Expression, Q, type Rational } from '../expression/index.ts
 import { countOperations, type Fit, fit, type FitProblem, type FloatFormat, formatByName } from '../fit/index.ts';
 import { describe } from '../functions/index.ts';
 import { budget, type Budget, failure, type Outcome, success } from '../outcome.ts';
-import type { CoefficientAnswer, ExpandRequest, FitAnswer, FitRequest } from '../protocol.ts';
+import type { CoefficientAnswer, ExpandRequest, FitAnswer, FitPieceAnswer, FitRequest } from '../protocol.ts';
 import { codeLanguage as isCode, readExact } from '../read/index.ts';
 import { encloseReal, rationalOf, real } from '../rigorous/index.ts';
 import { hexFloat, shortestDecimal, toPlain } from '../write/index.ts';
@@ -94,7 +94,7 @@ function intervalEnd(text: string, direction: 1 | -1): Outcome<Rational> {
 
 const up = (q: Rational): string => real.rationalToDecimal(q, DIGITS, 1);
 
-function coefficients({ terms, format }: Fit): CoefficientAnswer[] {
+function coefficients(terms: Fit['terms'], format: FitProblem['format']): CoefficientAnswer[] {
   return terms.map(({ power, value }) =>
     format.kind === 'float'
       ? { power, value: shortestDecimal(value, format.name), hex: hexFloat(value, format.name) }
@@ -112,7 +112,7 @@ function answerOf(found: Fit, problem: FitProblem, request: FitRequest, time: Bu
   const { error } = found;
   return {
     ok: true,
-    coefficients: coefficients(found),
+    coefficients: coefficients(found.terms, found.format),
     degree: found.degree,
     bound: {
       approximation: up(error.approximation),
@@ -128,9 +128,16 @@ function answerOf(found: Fit, problem: FitProblem, request: FitRequest, time: Bu
     taylorDegree: taylorDegree(found, problem, request, time),
     assumptions: found.assumptions,
     operations: countOperations(found.program),
-    ...(Q.isZero(found.centre) ? {} : { centre: found.format.kind === 'float' ? shortestDecimal(found.centre, found.format.name) : up(found.centre) }),
+    ...centreOf(found.centre, found.format),
+    ...(found.pieces ? { pieces: found.pieces.map((piece): FitPieceAnswer => ({ from: endText(piece.low, problem.low, problem, 0), to: endText(piece.high, problem.high, problem, 1), coefficients: coefficients(piece.terms, found.format), degree: piece.degree, bound: up(piece.error.total), ...centreOf(piece.centre, found.format) })) } : {}),
   };
 }
+
+const centreOf = (centre: Rational, format: FitProblem['format']): { readonly centre?: string } => (Q.isZero(centre) ? {} : { centre: format.kind === 'float' ? shortestDecimal(centre, format.name) : up(centre) });
+
+/** A cut as the shortest decimal of its float; an end of the whole interval as it was written. */
+const endText = (end: Rational, whole: Rational, { intervalText, format }: FitProblem, k: 0 | 1): string =>
+  Q.equal(end, whole) ? intervalText[k] : format.kind === 'float' ? shortestDecimal(end, format.name) : Q.toText(end);
 
 /** Degree of the truncated expansion that keeps the same bound; null where none was proved to. */
 function taylorDegree(found: Fit, problem: FitProblem, request: FitRequest, time: Budget): number | null {

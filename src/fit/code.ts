@@ -1,5 +1,5 @@
 /** A program as code: a function (or one expression) with a comment that states what was proved and under which assumptions. */
-import { build, type Expression, mapChildren } from '../expression/index.ts';
+import { build, type Expression, mapChildren, type Rational } from '../expression/index.ts';
 import { Declined } from '../outcome.ts';
 import { type CodeOptions, codeLanguage, commentLines, functionCode, type LanguageRow, type Statement, toCode } from '../write/index.ts';
 import type { FloatFormat } from './format.ts';
@@ -16,7 +16,8 @@ export interface FitCodeText {
 }
 
 export interface FitCodeRequest {
-  readonly program: Program;
+  /** Ascending; each serves arguments up to `below`, the last one all others. */
+  readonly branches: readonly { readonly below: Rational; readonly program: Program }[];
   readonly variable: string;
   readonly language: string;
   readonly format: FloatFormat;
@@ -68,11 +69,14 @@ function inlined({ steps, result }: Program): Expression {
 }
 
 /** Throws Declined where the language cannot say it (no such float type, for one). */
-export function fitCode({ program, variable, language, format, name, comment, expression }: FitCodeRequest): FitCodeText {
+export function fitCode({ branches, variable, language, format, name, comment, expression }: FitCodeRequest): FitCodeText {
   const row = rowFor(language);
   const options: CodeOptions = { language, format: format.name, literal: { hexadecimal: 'where inexact' } };
+  const [first] = branches;
+  if (!first) throw new RangeError('no program');
   if (expression) {
-    const written = toCode(inlined(program), options);
+    if (branches.length > 1) throw new Declined('bad-request', 'Several pieces need a function with branches; ask for the result function.');
+    const written = toCode(inlined(first.program), options);
     if (!written.ok) throw new Declined(written.error.code, written.error.message);
     const wrap = computesInDoubles(row) ? row.floats[format.name]?.wrap : undefined;
     const body = wrap ? `${wrap[0]}${written.value.text}${wrap[1]}` : written.value.text;
@@ -81,8 +85,12 @@ export function fitCode({ program, variable, language, format, name, comment, ex
   // Without declared types the argument decides in which format the operations round.
   const untyped = row.floats[format.name]?.wrap !== undefined && row.floats[format.name]?.name === '';
   const converted: Statement[] = untyped ? [{ kind: 'let', name: variable, value: build.symbol(variable), rounded: true }] : [];
-  const body: Statement[] = [...converted, ...program.steps.map((s): Statement => ({ kind: 'let', ...s })), { kind: 'return', value: program.result, rounded: computesInDoubles(row) }];
-  const written = functionCode({ name, parameters: [variable], body }, options);
+  const statements = ({ steps, result }: Program): Statement[] => [...steps.map((step): Statement => ({ kind: 'let', ...step })), { kind: 'return', value: result, rounded: computesInDoubles(row) }];
+  const body: Statement[] = branches.flatMap(({ below, program }, k): Statement[] => {
+    if (k === branches.length - 1) return statements(program);
+    return [{ kind: 'if', condition: { kind: 'relation', sides: [build.symbol(variable), build.number(below)], relations: ['<='] }, then: statements(program) }];
+  });
+  const written = functionCode({ name, parameters: [variable], body: [...converted, ...body] }, options);
   if (!written.ok) throw new Declined(written.error.code, written.error.message);
   const text = [...commentLines(row.id, comment), ...written.value.text.split('\n').flatMap((line) => wrapCode(line, row))].join('\n');
   const { imports } = written.value;

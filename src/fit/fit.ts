@@ -5,7 +5,8 @@ import { real } from '../rigorous/index.ts';
 import { codeLanguage, type PolynomialTerm, toPlain } from '../write/index.ts';
 import { type FitCodeText, fitCode, functionName, fusing, machineArithmetic, rowFor } from './code.ts';
 import type { FloatFormat, NumberFormat } from './format.ts';
-import { fitPolynomial, type PolynomialProblem } from './polynomialFit.ts';
+import { splitFit } from './pieces.ts';
+import { type PolynomialFit, fitPolynomial, type PolynomialProblem } from './polynomialFit.ts';
 import type { Program } from './program.ts';
 import type { FitMeasure, ProvedError } from './proof.ts';
 import type { Basis } from './search.ts';
@@ -41,10 +42,22 @@ export interface Fit {
   readonly centre: Rational;
   readonly program: Program;
   readonly error: ProvedError;
+  /** In ascending order where the interval was split; `terms`, `centre` and `program` are then those of the first one, `error` and `degree` the largest. */
+  readonly pieces?: readonly PieceFit[];
   /** How it was proved, in words. */
   readonly method: string;
   readonly code: FitCodeText;
   readonly assumptions: readonly string[];
+}
+
+/** One part of a split interval, both ends inclusive. */
+export interface PieceFit {
+  readonly low: Rational;
+  readonly high: Rational;
+  readonly terms: readonly PolynomialTerm[];
+  readonly degree: number;
+  readonly centre: Rational;
+  readonly error: ProvedError;
 }
 
 /** Fails with bad-request (what cannot be fitted and why), undecided (nothing could be proved), over-budget. */
@@ -55,18 +68,43 @@ function fitted(problem: FitProblem, budget: Budget): Fit {
   const row = rowFor(language);
   if (format.kind === 'fixed') throw new Declined('bad-request', 'Fixed-point formats are not fitted in this version; choose binary32 or binary64.');
   if (method === 'rational') throw new Declined('bad-request', 'Rational forms are not fitted in this version; choose the method minimax.');
-  if (problem.pieces !== 1) throw new Declined('bad-request', 'The interval is not split in this version; ask for one piece.');
   if (!row.floats[format.name]) throw new Declined('bad-request', `${row.title} has no ${format.name} type; choose another format or language.`);
   const fused = contraction === 'fma' ? fusing(language, format) : 'never';
   if (contraction === 'fma' && fused === 'never') throw new Declined('bad-request', `${row.title} has no fused multiply-add; ask for the contraction any or none.`);
-  const polynomial: PolynomialProblem = { ...problem, format, ...withOperations(language, format), fma: fused === 'exactly', writtenFma: contraction === 'fma', method };
-  const found = fitPolynomial(polynomial, budget);
+  const whole: PolynomialProblem = { ...problem, format, ...withOperations(language, format), fma: fused === 'exactly', writtenFma: contraction === 'fma', method };
+  const parts = problem.pieces === 1 ? [{ low: problem.low, high: problem.high, found: fitPolynomial(whole, budget) }] : splitFit(whole, problem.pieces, budget);
+  const [first] = parts;
+  if (!first) throw new RangeError('no part was fitted');
+  const error = parts.map((p) => p.found.error).reduce(worse);
   const assumptions = assumptionsOf(problem, format);
   const variable = /^[A-Za-z][A-Za-z0-9]*$/.test(problem.variable) && !row.reserved.includes(problem.variable) ? problem.variable : 'x';
-  const program = variable === problem.variable ? found.writtenProgram : renamed(found.writtenProgram, problem.variable, variable);
-  const comment = commentOf(problem, format, found.error, assumptions);
-  const code = fitCode({ program, variable, language, format, name: functionName(wordsFor(problem.function), language), comment, expression: problem.result === 'expression' });
-  return { terms: found.terms, format, degree: found.degree, centre: found.centre, program: found.writtenProgram, error: found.error, method: methodText(problem), code, assumptions };
+  const programOf = ({ writtenProgram }: PolynomialFit): Program => (variable === problem.variable ? writtenProgram : renamed(writtenProgram, problem.variable, variable));
+  const comment = commentOf(problem, format, error, assumptions);
+  const code = fitCode({
+    branches: parts.map(({ high, found }) => ({ below: high, program: programOf(found) })),
+    variable,
+    language,
+    format,
+    name: functionName(wordsFor(problem.function), language),
+    comment,
+    expression: problem.result === 'expression',
+  });
+  const degree = Math.max(...parts.map((p) => p.found.degree));
+  const pieces = parts.length === 1 ? {} : { pieces: parts.map(({ low, high, found }) => ({ low, high, terms: found.terms, degree: found.degree, centre: found.centre, error: found.error })) };
+  return { terms: first.found.terms, format, degree, centre: first.found.centre, program: first.found.writtenProgram, error, ...pieces, method: methodText(problem), code, assumptions };
+}
+
+const greater = (a: Rational, b: Rational): Rational => (Q.compare(a, b) >= 0 ? a : b);
+/** The larger of each part; the total is that of the worst piece. */
+function worse(a: ProvedError, b: ProvedError): ProvedError {
+  return {
+    approximation: greater(a.approximation, b.approximation),
+    rounding: greater(a.rounding, b.rounding),
+    evaluation: greater(a.evaluation, b.evaluation),
+    total: greater(a.total, b.total),
+    lower: greater(a.lower, b.lower),
+    subnormal: a.subnormal && b.subnormal ? greater(a.subnormal, b.subnormal) : (a.subnormal ?? b.subnormal),
+  };
 }
 
 const withOperations = (language: string, format: FloatFormat): { readonly operations?: FloatFormat } => {

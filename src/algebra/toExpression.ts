@@ -1,5 +1,5 @@
 /** Elements as a person writes them: numbers in front, powers of one base together, radicals joined, sums in natural order. */
-import { build, Q, type Expression, type Rational } from '../expression/index.ts';
+import { build, Q, walk, type Expression, type Rational } from '../expression/index.ts';
 import { constantKernel, kernelElement, rationalOf, type Context } from './context.ts';
 import { exponentToRational, numeratorOf, denominatorOf, type Exponent } from './exponent.ts';
 import { linearFactors } from './linearFactors.ts';
@@ -275,12 +275,14 @@ function writeProduct(ctx: Context, content: Rational, monomial: Monomial, extra
   joinAbsolutes(ctx, powers, monomial);
   joinRoots(ctx, powers, monomial);
   joinPowers(ctx, powers);
+  const root = joinedSquareRoot(ctx, [...powers.values()], radicals.get(2) ?? 1n);
+  const plainRoot = root !== null && ![...walk(root)].some((e) => e.kind !== 'number' && e.kind !== 'constant' && e.kind !== 'power' && e.kind !== 'product' && e.kind !== 'quotient');
+  if (root && !plainRoot) powers.set('square root', { rank: RANK.root, order: 0, base: () => root, exponent: Q.ONE, positive: false });
   const rankOf = (p: Power): number => (rationalOf(p.exponent) ? p.rank : Math.max(p.rank, RANK.function));
   const ordered = [...powers.values()].sort((x, y) => rankOf(x) - rankOf(y) || x.order - y.order);
   const numbers: Expression[] = [];
   for (const [q, value] of [...radicals].sort((x, y) => x[0] - y[0])) if (q !== 2) numbers.push(build.power(build.number(value), Q.rational(1, q)));
-  const root = joinedSquareRoot(ctx, [...powers.values()], radicals.get(2) ?? 1n);
-  if (root) numbers.unshift(root);
+  if (root && plainRoot) numbers.unshift(root);
   let placed = false;
   const place = (): void => {
     if (!placed) top.push(...numbers);

@@ -19,7 +19,7 @@ export interface ZeroTest {
 
 const PRECISIONS = [64, 128, 320, 800, 2000] as const;
 /** Numerators and denominators of the values that parameters take, spread so that no small relation holds among them. */
-const SAMPLE_COUNT = 3;
+const SAMPLE_COUNT = 4;
 
 export function createZeroTest(table: KernelTable, describe: (id: string) => FunctionDescription | null | undefined, facts: AssumptionStore, signOf: (k: Kernel) => SignSet, deepZero: (a: Element) => boolean, refuted: (a: Element) => boolean): ZeroTest {
   const differs = (a: Element): boolean => {
@@ -117,7 +117,16 @@ function sampleOf(facts: AssumptionStore, name: string, sample: number): Rationa
   if (facts.isComplex(name)) return { re: Q.subtract(positive, Q.ONE), im: Q.rational(1 + ((hash >>> 7) % 9973), 9901) };
   const sign = facts.signOf(name);
   if ((sign & (POSITIVE | NEGATIVE)) === NEGATIVE) return Q.negate(positive);
-  return sample === 1 && (sign & NEGATIVE) !== 0 ? Q.negate(positive) : positive;
+  // Signs differ from sample to sample: all positive, all negative, mixed.
+  const negative = sample === 1 || (sample > 1 && nameBit(name, sample) === 1);
+  return negative && (sign & NEGATIVE) !== 0 ? Q.negate(positive) : positive;
+}
+
+/** A bit that depends on the name and the sample only; different for neighbouring letters in one of samples 2 and 3. */
+function nameBit(name: string, sample: number): number {
+  let sum = 0;
+  for (let i = 0; i < name.length; i += 1) sum += name.charCodeAt(i) * (2 * i + 1);
+  return (sum >>> (sample - 2)) & 1;
 }
 
 /** The sign of a ball's real part, null while it contains zero or the ball is not real. */

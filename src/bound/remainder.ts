@@ -89,7 +89,9 @@ function requireReal(segments: readonly Segment[], variable: string, parameters:
     const ends = [segment.lower, segment.upper].map((end) => (end === null ? null : n.value(end)));
     const [a, b] = ends;
     const inner = a && b ? [1, 3, 5, 7].map((k) => real.add(a, real.multiply(real.subtract(b, a, 80), { mid: BigInt(k), rad: 0n, exp: -3 }, 80), 80)) : [];
-    for (const x of [...ends, ...inner]) {
+    // A local end may be a singular point, where values are neither needed nor cheap.
+    const far = segment.local === 'lower' ? [ends[1]] : segment.local === 'upper' ? [ends[0]] : ends;
+    for (const x of [...far, ...inner]) {
       if (!x || n.value(segment.expansion.function, new Map([[variable, x]])) !== null) continue;
       const environment = new Map([...parameters, [variable, x] as const].map(([name, ball]) => [name, { re: ball, im: real.ZERO }] as const));
       const value = enclose(segment.expansion.function, environment, 80, describe);
@@ -213,7 +215,7 @@ function run<T>(numbers: Numbers<T>, given: readonly Segment[], problem: BoundPr
   };
   // Values at the ends first: they are lower bounds, and often the maximum.
   for (const segment of segments) {
-    for (const end of [segment.lower, segment.upper]) {
+    for (const end of segment.local === 'lower' ? [segment.upper] : segment.local === 'upper' ? [segment.lower] : [segment.lower, segment.upper]) {
       const x = end === null ? null : n.value(end);
       const y = x === null ? null : remainderAt(x, { expansion: segment.expansion, sum: sumOf(segment.expansion) }, n, options);
       if (y !== null) raise(r.lowerEnd(r.absolute(y)));

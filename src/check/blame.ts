@@ -7,7 +7,7 @@ import { replaceNode } from './decimals.ts';
 import { edits, type Edit, type TrueTerm } from './edits.ts';
 import { sample } from './enclose.ts';
 import { judge, type Failed } from './judge.ts';
-import { writeIn, type Notation } from './notation.ts';
+import { signedIn, writeIn, type Notation } from './notation.ts';
 import { compareSizes, expandIn, leading, type Size } from './size.ts';
 import type { PrintedTerm, Truncated } from './truncated.ts';
 
@@ -189,8 +189,36 @@ function termBlame(accused: Accused, difference: { readonly size: Size; readonly
   });
   const place = next?.node.span ?? truncated.orders[0]?.span ?? truncated.side.span;
   if (!place || !right) return null;
-  return { place, message: `A term is missing: ${writeIn(notation, right)}.`, found: writeIn(notation, right), fix: null };
+  return { place, message: `A term is missing: ${writeIn(notation, right)}.`, found: writeIn(notation, right), fix: insertion(accused, next ?? null, right, difference.size) };
 }
+
+/** The missing term set in before the first smaller one, else before the remainder mark; only where the sum is the whole side and the claim gets further with it. */
+function insertion(accused: Accused, next: PrintedTerm | null, right: Expression, size: Size): Blame['fix'] {
+  const { truncated, setting, notation, text, truth, relation } = accused;
+  const { side } = truncated;
+  if (side.kind !== 'sum') return null;
+  const again = judge(truth, { ...side, terms: [...side.terms, right] }, relation, setting);
+  const helps = again.kind === 'holds' || again.kind === 'identity' || (again.kind === 'fails' && again.failure.difference !== null && compareSizes(again.failure.difference.size, size) > 0);
+  if (!helps) return null;
+  const isMark = (e: Expression): boolean => e.kind === 'order' || e.kind === 'dots' || (e.kind === 'negation' && isMark(e.operand));
+  const follower = next ? side.terms.find((t) => t === next.node) : side.terms.find(isMark);
+  if (!follower) {
+    const end = side.span?.end;
+    return next || end === undefined ? null : { start: end, end, text: ` ${signedIn(notation, right)}` };
+  }
+  if (!follower.span) return null;
+  const head = text.slice(0, follower.span.start);
+  const sign = /[-−–+](?:\s|&)*$/.exec(head);
+  if (/[-−–+]/.test(text.charAt(follower.span.start)) || (side.terms[0] !== follower && sign)) {
+    const own = /[-−–+]/.test(text.charAt(follower.span.start));
+    const at = own ? follower.span.start : follower.span.start - (sign?.[0].length ?? 0);
+    const first = own && side.terms[0] === follower;
+    return { start: at, end: at, text: `${first ? withoutPlus(signedIn(notation, right)) : signedIn(notation, right)} ` };
+  }
+  const at = follower.span.start;
+  return side.terms[0] === follower ? { start: at, end: at, text: `${withoutPlus(signedIn(notation, right))} + ` } : null;
+}
+const withoutPlus = (signed: string): string => signed.replace(/^\+ /, '').replace(/^([-−]) /, '$1');
 
 /** The term with the sign in front of it; null at the head of the sum, where its loss would leave a bare sign. */
 function withoutTerm({ text }: Accused, term: Span): Span | null {

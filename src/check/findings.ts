@@ -20,6 +20,8 @@ export interface Place {
   readonly text: string;
   readonly formula: FoundFormula;
   readonly around: Around;
+  /** Where the next claim of the text begins: what stands behind that belongs to it. Absent: there is none. */
+  readonly until?: number;
 }
 
 export interface FindingOptions {
@@ -121,9 +123,10 @@ function mainFinding(printed: Claim, given: Expression, asked: Asked, place: Pla
 
 /** The tolerance stated beside the claim, with the interval it is stated for. */
 function accuracyFinding(printed: Claim, given: Expression, setting: Setting, place: Place): Finding | null {
-  const end = Math.min(place.text.length, Math.max(place.formula.span.end, printed.span.end) + ACCURACY_REACH);
-  const paragraph = place.text.slice(printed.span.end, end).search(/\n\s*\n/);
-  const statement = statementIn(place.text, printed.span.end, paragraph < 0 ? end : printed.span.end + paragraph, place.around.conditions, setting.variable);
+  const from = printed.span.end;
+  const end = Math.min(place.text.length, Math.max(place.formula.span.end, from) + ACCURACY_REACH, place.until ?? Infinity);
+  const stop = place.text.slice(from, end).search(OTHER_SENTENCE);
+  const statement = statementIn(place.text, from, stop < 0 ? end : from + stop, place.around.conditions, setting.variable);
   if (!statement) return null;
   const { f, claim } = prepared(given, printed, setting);
   const verdict = judgeAccuracy(statement, f, withoutMarks(claim.side), setting);
@@ -138,6 +141,8 @@ function accuracyFinding(printed: Claim, given: Expression, setting: Setting, pl
   }
 }
 const ACCURACY_REACH = 160;
+/** The end of the paragraph, or of a sentence that the next one does not go on about. */
+const OTHER_SENTENCE = /\n\s*\n|[.!?][$)\s]*\s(?=[A-Z])(?!(?:The|Its|Here the|This|It)\b[^.;]{0,40}?\b(?:errors?|accura\w+|within|correct to|precision|deviat\w+)\b)/;
 
 /** Short writings written out, and a factor that only the printed side has fixed by the leading terms. */
 function prepared(given: Expression, printed: Claim, setting: Setting): { readonly f: Expression; readonly claim: Claim } {
@@ -243,7 +248,8 @@ function isHeldAgainst(claim: Claim, f: Expression, best: Tried, several: boolea
   const count = truncated.terms.length;
   const certain = best.choice.certain;
   if (claim.relation === 'to' || claim.relation === 'define') return false;
-  if (claim.relation === 'tilde' && (count === 1 || place.formula.inline) && truncated.mark === 'none') return !place.formula.inline && certain && failure.matched === 0 && count === 1;
+  // In running text a tilde before one term may only say how a quantity scales.
+  if (claim.relation === 'tilde' && (count === 1 || (place.formula.inline && failure.matched === 0)) && truncated.mark === 'none') return !place.formula.inline && certain && failure.matched === 0 && count === 1;
   const oneChange = (): boolean => isOneChangeAway(accusedOf(claim, f, best.choice.setting, { failure, truncated }, place));
   const marked = truncated.mark !== 'none';
   if (marked) return certain || failure.matched > 0 || !several || (count > 1 && isTranscendental(f, best.choice.setting.variable));

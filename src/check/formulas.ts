@@ -1,6 +1,7 @@
 /** The formulas of a document that may hold claims: mathematics, Markdown, comments of code, plain lines. */
 import { type Expression, type Span, walk } from '../expression/index.ts';
 import { type DocumentContent, type Formula, type MacroTable, readDocument, readFormula, type Region } from '../read/index.ts';
+import { type CheckMemory, macrosUsed, signatureOf } from './memory.ts';
 
 export interface FoundFormula {
   readonly span: Span;
@@ -20,11 +21,18 @@ export interface Formulas {
 }
 
 /** Formulas in order of appearance. A text without any mathematics marked as such is read as one formula. */
-export function formulasOf(text: string, language: string, options: { readonly fileName?: string; readonly macros?: MacroTable }): Formulas {
+export function formulasOf(text: string, language: string, options: { readonly fileName?: string; readonly macros?: MacroTable; readonly memory?: CheckMemory }): Formulas {
   const content = readDocument(text, language, options);
   const found: FoundFormula[] = [];
   const unread: UnreadFormula[] = [];
   const read = (span: Span, notation: 'latex' | 'plain', inline: boolean, label: string | null, quiet: boolean, source = text): boolean => {
+    const written = source.slice(span.start, span.end);
+    const key = options.memory ? signatureOf([notation, written, macrosUsed(written, content.macros)]) : '';
+    const known = options.memory?.formulas.recall(key, span.start);
+    if (known) {
+      found.push({ span, notation, formula: known, inline, label });
+      return true;
+    }
     const outcome = readFormula(source, notation, { start: span.start, end: span.end, macros: content.macros, joinRows: true });
     const mixed = outcome.ok ? foreignText(text, span, outcome.value.expression) : null;
     if (mixed !== null) {
@@ -32,6 +40,7 @@ export function formulasOf(text: string, language: string, options: { readonly f
       return false;
     }
     if (outcome.ok) {
+      options.memory?.formulas.keep(key, span.start, outcome.value);
       found.push({ span, notation, formula: outcome.value, inline, label });
       return true;
     }
@@ -44,8 +53,18 @@ export function formulasOf(text: string, language: string, options: { readonly f
     else if (region.kind === 'text') for (const place of proseFormulas(text, region.contentStart, region.contentEnd)) read(place, 'plain', true, null, true);
     else for (const place of region.formulas) read({ start: place.start, end: place.end }, region.language === 'plain' ? 'plain' : 'latex', region.kind === 'inline', place.label ?? region.label ?? place.tag ?? region.tag ?? null, false);
   }
-  if (found.length === 0 && unread.length === 0 && content.regions.length === 0 && text.trim() !== '') read({ start: 0, end: text.length }, language === 'plain' && !text.includes('\\') ? 'plain' : 'latex', false, null, false);
+  if (found.length === 0 && unread.length === 0 && content.regions.length === 0 && text.trim() !== '') read({ start: 0, end: endOfFormula(text) }, language === 'plain' && !text.includes('\\') ? 'plain' : 'latex', false, null, false);
   return { found, unread, content };
+}
+
+/** Where words go on behind a formula that stands alone: `... as x \to \infty`. Only behind a relation, and outside of braces. */
+function endOfFormula(text: string): number {
+  for (const match of text.matchAll(/[\s,;](?:as|for|when|where|if|near|around|provided|valid)\s+(?=[\w\\|$])/g)) {
+    const before = text.slice(0, match.index);
+    const depth = (before.match(/\{/g)?.length ?? 0) - (before.match(/\}/g)?.length ?? 0);
+    if (depth === 0 && RELATION.test(before)) return match.index;
+  }
+  return text.length;
 }
 
 /** Dollar signs or whole words inside what was taken for one formula: its delimiters are not paired as they look. */

@@ -8,10 +8,13 @@ import { type Claim, claimsOf } from './claims.ts';
 import { type Definitions, definitionsIn, resolve } from './definitions.ts';
 import { findingOf, unresolved, type Place } from './findings.ts';
 import { type FoundFormula, formulasOf } from './formulas.ts';
+import { type CheckMemory, macrosUsed, signatureOf } from './memory.ts';
 import { isGridName } from './normalise.ts';
 import { quantitiesNamed } from './quantities.ts';
 import type { Asked } from './setting.ts';
 import { hasMarks } from './truncated.ts';
+
+export { CheckMemory } from './memory.ts';
 
 export interface CheckParts {
   readonly text: string;
@@ -28,6 +31,8 @@ export interface CheckParts {
   readonly code?: BranchReader;
   /** Macros of files that the document includes. */
   readonly macros?: MacroTable;
+  /** Verdicts of earlier checks; with it only what an edit touches is judged again. */
+  readonly memory?: CheckMemory;
 }
 
 export interface Checked {
@@ -46,26 +51,73 @@ export function check(parts: CheckParts, budget: Budget): Outcome<Checked> {
   return attempt(() => {
     const asked = readAsked(parts, budget);
     const given = parts.of === undefined ? null : readGiven(parts.of, asked.variable);
-    const { found, unread } = formulasOf(parts.text, parts.language, parts);
+    const { found, unread, content } = formulasOf(parts.text, parts.language, parts);
     const notes = readNotes(parts.text, parts.language, parts.fileName);
     const definitions = definitionsIn(found);
     const findings: Finding[] = [];
-    for (const formula of found) {
+    const request = signatureOf([parts.language, asked.variable, asked.point, asked.side, asked.assumptions, parts.of, parts.variable]);
+    const claims = found.map((formula) => ({ formula, claims: claimsIn(formula, given) }));
+    const starts = claims.flatMap((c) => c.claims.filter((claim) => claim.function !== null || hasMarks(claim.side)).map((claim) => claim.span.start)).sort((a, b) => a - b);
+    for (const { formula, claims: own } of claims) {
+      if (own.length === 0) continue;
       const note = settingsAt(notes, formula.span.start);
       if (note.skip === true) continue;
-      const place: Place = { text: parts.text, formula, around: aroundOf(parts.text, formula) };
-      for (const claim of claimsIn(formula, given)) {
-        const time = share(budget);
-        const local = withNote({ ...asked, budget: time }, note, parts);
-        findings.push(...withinTime(claim.span, () => checkClaim(claim, given, definitions, local, place)));
-      }
+      const around = aroundOf(parts.text, formula);
+      const { start, end } = formula.span;
+      const judgeAll = (time: Budget): readonly Finding[] =>
+        own.flatMap((claim) => {
+          const until = firstFrom(starts, claim.span.end);
+          const place: Place = { text: parts.text, formula, around, ...(until === null ? {} : { until }) };
+          const local = withNote({ ...asked, budget: share(time) }, note, parts);
+          return withinTime(claim.span, () => checkClaim(claim, given, definitions, local, place));
+        });
+      const next = firstFrom(starts, end);
+      const key = (): string =>
+        signatureOf([request, note, parts.text.slice(start, end), formula.notation, formula.inline, formula.label, around.before, around.after, next === null || next > end + REACH ? null : next - start, definitionsUsed(own, definitions, parts.text, start), macrosUsed(parts.text.slice(start, end), content.macros)]);
+      findings.push(...remembered(parts.memory, key, start, budget, judgeAll));
     }
     for (const branch of parts.code?.readBranches(parts.text, parts.language) ?? []) {
       const note = settingsAt(notes, branch.span.start);
-      if (note.skip !== true) findings.push(...withinTime(branch.span, () => branchFindings(parts.text, branch, withNote({ ...asked, budget: share(budget) }, note, parts))));
+      if (note.skip === true) continue;
+      const { start, end } = branch.span;
+      const judgeBranch = (time: Budget): readonly Finding[] => withinTime(branch.span, () => branchFindings(parts.text, branch, withNote({ ...asked, budget: share(time) }, note, parts)));
+      const key = (): string => signatureOf([request, note, branch, parts.text.slice(start, end + REACH)]);
+      findings.push(...remembered(parts.memory, key, start, budget, judgeBranch));
     }
     return { findings: findings.sort((a, b) => a.claim.start - b.claim.start || a.start - b.start), unread };
   });
+}
+
+/** Findings kept from an earlier check, else judged now and kept, unless time ran short. */
+function remembered(memory: CheckMemory | undefined, keyOf: () => string, start: number, budget: Budget, find: (time: Budget) => readonly Finding[]): readonly Finding[] {
+  if (!memory) return find(budget);
+  const key = keyOf();
+  const known = memory.verdicts.recall(key, start);
+  if (known) return known;
+  const allowed = budget.remaining() * SHARE;
+  const begun = performance.now();
+  const findings = find(budget);
+  if (performance.now() - begun < allowed || findings.every((f) => f.verdict === 'holds')) memory.verdicts.keep(key, start, findings);
+  return findings;
+}
+
+/** What the names in the claims stand for, as it enters their verdicts. */
+function definitionsUsed(claims: readonly Claim[], definitions: Definitions, text: string, at: number): readonly unknown[] {
+  return claims.flatMap((claim) => {
+    const own = claim.name ?? claim.function;
+    return own && (claim.function === null || wordOf(claim.function, text) !== null) ? resolve(definitions, own, at) : [];
+  });
+}
+
+/** The first of ascending numbers that is at least `from`. */
+function firstFrom(ascending: readonly number[], from: number): number | null {
+  let [low, high] = [0, ascending.length];
+  while (low < high) {
+    const middle = (low + high) >> 1;
+    if ((ascending[middle] ?? 0) < from) low = middle + 1;
+    else high = middle;
+  }
+  return ascending[low] ?? null;
 }
 
 /** The findings, or that there was no time for them. */

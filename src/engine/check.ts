@@ -22,6 +22,7 @@ export async function askCheck(request: CheckRequest, tools: EngineTools, time: 
       text,
       language,
       code: tools.code,
+      memory: tools.memory,
       assumptions: assumptions.value,
       ...(variable === undefined ? {} : { variable }),
       ...(point === undefined ? {} : { point }),

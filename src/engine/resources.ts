@@ -1,4 +1,5 @@
 /** What the engine needs from its host, and what it keeps between requests. It has no file system of its own. */
+import { CheckMemory } from '../check/index.ts';
 import { CodeReader } from '../read/index.ts';
 
 export interface EngineResources {
@@ -6,9 +7,10 @@ export interface EngineResources {
   readonly loadFile: (name: string) => Promise<Uint8Array>;
 }
 
-/** State that lives as long as one engine: loaded grammars. */
+/** State that lives as long as one engine: loaded grammars, verdicts of earlier checks. */
 export interface EngineTools {
   readonly code: CodeReader;
+  readonly memory: CheckMemory;
 }
 
 const PARSER_RUNTIME = 'web-tree-sitter.wasm';
@@ -18,5 +20,5 @@ export function engineTools(resources: EngineResources): EngineTools {
     loadGrammar: (name) => resources.loadFile(`${name}.wasm`),
     wasmBinary: () => resources.loadFile(PARSER_RUNTIME),
   });
-  return { code };
+  return { code, memory: new CheckMemory() };
 }

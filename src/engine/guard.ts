@@ -8,6 +8,7 @@ import type { ExpandRequest, GuardAnswer, GuardRequest } from '../protocol.ts';
 import { codeLanguage as isCode, readExact } from '../read/index.ts';
 import { encloseReal, rationalOf, real } from '../rigorous/index.ts';
 import { codeLanguage, shortestDecimal, toPlain } from '../write/index.ts';
+import { libraryPrefix } from './insertion.ts';
 import { functionOf, type Point, readPoint, variableOf } from './question.ts';
 import type { EngineTools } from './resources.ts';
 import { type SourceFormula, sourceFormula } from './source.ts';
@@ -60,6 +61,7 @@ function problemOf(request: GuardRequest, target: Expression, { variable, point 
     format,
     language,
     library: request.library ?? 1,
+    ...libraryPrefix(request.text.slice(source.start, source.end), request.text, language),
     ...(tolerance ? { tolerance } : {}),
     ...(request.derivative ? { derivative: true } : {}),
   });

@@ -46,7 +46,7 @@ function isSingle(expression: string, language: string): boolean {
 }
 
 /** `np.` or `math.` as the expression itself, else its file, calls the library. */
-function libraryPrefix(expression: string, document: string, language: string): { readonly prefix?: string } {
+export function libraryPrefix(expression: string, document: string, language: string): { readonly prefix?: string } {
   if (language !== 'python') return {};
   const used = /\b(np|numpy|math|mp)\.\w+\s*\(/.exec(expression) ?? /\b(np|numpy|math)\.\w+\s*\(/.exec(document);
   return used?.[1] ? { prefix: `${used[1]}.` } : {};

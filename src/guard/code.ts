@@ -1,6 +1,6 @@
 /** A guard as a function in a programming language: the comparison, the series, the direct form, and a comment that states what was proved. */
 import { build, type Expression, mapChildren, Q, type Rational, structureKey, walk } from '../expression/index.ts';
-import type { FloatFormat } from '../fit/index.ts';
+import { type FloatFormat, wrapCode } from '../fit/index.ts';
 import { Declined } from '../outcome.ts';
 import { codeLanguage, commentLines, functionCode, type LanguageRow, type Statement } from '../write/index.ts';
 import type { SeriesForm } from './series.ts';
@@ -12,7 +12,9 @@ export interface GuardCode {
   readonly format: FloatFormat;
   readonly comment: readonly string[];
   readonly direct: Expression;
-  readonly series: { readonly form: SeriesForm; readonly point: Rational; readonly switch: Rational } | null;
+  readonly series: { readonly form: SeriesForm; readonly point: Rational; readonly switch: Rational; /** The comparison includes the switch itself. */ readonly closed: boolean } | null;
+  /** How the file calls its library (`np.`); the language's habit where absent. */
+  readonly prefix?: string;
 }
 
 export function rowFor(language: string): LanguageRow {
@@ -35,7 +37,7 @@ export function identifierFor(symbol: string, row: LanguageRow): string {
   return row.reserved.includes(name) ? `${name}_` : name;
 }
 
-export function guardCode({ name, variable, language, format, comment, direct, series }: GuardCode): { readonly code: string; readonly imports: readonly string[] } {
+export function guardCode({ name, variable, language, format, comment, direct, series, prefix }: GuardCode): { readonly code: string; readonly imports: readonly string[] } {
   const row = rowFor(language);
   if (!row.floats[format.name]) throw new Declined('bad-request', `${row.title} has no ${format.name} type; choose another format or language.`);
   const parameter = identifierFor(variable, row);
@@ -45,17 +47,17 @@ export function guardCode({ name, variable, language, format, comment, direct, s
   const rounded = row.family === 'javascript';
   const body: Statement[] = untyped ? [{ kind: 'let', name: parameter, value: build.symbol(parameter), rounded: true }] : [];
   if (series) {
-    const { form, point } = series;
+    const { form, point, closed } = series;
     const offset = Q.isZero(point) ? build.symbol(parameter) : build.sum(build.symbol(parameter), build.number(Q.negate(point)));
-    const condition: Expression = { kind: 'relation', sides: [build.call('abs', offset), build.number(series.switch)], relations: ['<'] };
+    const condition: Expression = { kind: 'relation', sides: [build.call('abs', offset), build.number(series.switch)], relations: [closed ? '<=' : '<'] };
     body.push({ kind: 'if', condition, then: [...form.steps.map((s): Statement => ({ kind: 'let', name: s.name, value: rename(s.value) })), { kind: 'return', value: rename(form.result), rounded }] });
   }
   const { steps, result } = named(rename(direct), new Set([parameter, ...row.reserved]));
   body.push(...steps.map((s): Statement => ({ kind: 'let', ...s })), { kind: 'return', value: result, rounded });
-  const written = functionCode({ name: functionName(name, row), parameters: [parameter], body }, { language, format: format.name, literal: { hexadecimal: 'where inexact' } });
+  const written = functionCode({ name: functionName(name, row), parameters: [parameter], body }, { language, format: format.name, literal: { hexadecimal: 'where inexact' }, ...(prefix === undefined ? {} : { prefix }) });
   if (!written.ok) throw new Declined(written.error.code, written.error.message);
   const { imports, text } = written.value;
-  const whole = [...commentLines(row.id, comment), text].join('\n');
+  const whole = [...commentLines(row.id, comment), ...text.split('\n').flatMap((line) => wrapCode(line, row))].join('\n');
   return { code: `${imports.length > 0 ? `${imports.join('\n')}\n\n` : ''}${whole}\n`, imports };
 }
 

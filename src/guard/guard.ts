@@ -12,7 +12,7 @@ import { evaluationBound, seriesForm, type SeriesForm, seriesTerms, type SeriesT
 import type { Guarded, GuardProblem, GuardRange } from './types.ts';
 import { commentOf, decimal } from './words.ts';
 
-const MOST_TERMS = 16;
+const MOST_TERMS = 24;
 /** Fewer terms are taken where more of them gain less than this. */
 const PLATEAU = 1.1;
 /** A plainer form is kept where others gain less than this. */
@@ -22,6 +22,8 @@ interface Candidate {
   readonly form: ExactForm;
   readonly scans: readonly Scan[];
   readonly series: SeriesForm | null;
+  /** The exact terms, as a reader writes them. */
+  readonly seriesText: string;
   readonly switch: Rational | null;
   readonly seriesBound: number | null;
   readonly directBound: number | null;
@@ -36,7 +38,7 @@ export function guarded(problem: GuardProblem, budget: Budget): Guarded {
   if (!dependsOn(f, variable)) throw new Declined('bad-request', 'This expression does not depend on the variable; choose one that does.');
   const scanner = new Scanner(variable, { format, library }, budget);
   const setting = settle(problem, scanner);
-  const shared = seriesFor(problem, setting.sides, budget);
+  const shared = seriesFor(problem, setting.sides, scanner, budget);
   const candidates: Candidate[] = [];
   const judge = (form: ExactForm): void => {
     const sides = parityOf(f, variable) && parityOf(form.tree, variable) && setting.symmetric ? setting.sides.slice(0, 1) : setting.sides;
@@ -169,7 +171,7 @@ interface SharedSeries {
 }
 
 /** What is needed to judge a series branch on the sides that touch the point; null where there is none to be had. */
-function seriesFor(problem: GuardProblem, sides: readonly Side[], budget: Budget): SharedSeries | null {
+function seriesFor(problem: GuardProblem, sides: readonly Side[], scanner: Scanner, budget: Budget): SharedSeries | null {
   const { point, format, library, function: f, variable } = problem;
   if (typeof point === 'string' || !isRepresentable(point, format.name)) return null;
   const touching = sides.filter((s) => Q.isZero(s.from));
@@ -182,7 +184,7 @@ function seriesFor(problem: GuardProblem, sides: readonly Side[], budget: Budget
     let reach = side.to && Q.compare(side.to, Q.ONE) < 0 ? side.to : Q.ONE;
     let found: Truncation | null = null;
     for (let cut = 0; cut < 8 && !found; cut += 1) {
-      const attempt = new Truncation(f, variable, side, reach, budget);
+      const attempt = new Truncation(f, variable, side, reach, scanner.orders, budget);
       if (attempt.usable) found = attempt;
       else reach = Q.divide(reach, Q.rational(2));
     }
@@ -199,17 +201,19 @@ function formOf(shared: SharedSeries, n: number, { variable, point }: GuardProbl
 }
 
 /** Error of the series below the distance h. */
-function seriesError(shared: SharedSeries, n: number, h: Rational, problem: GuardProblem, budget: Budget): number {
+function seriesError(shared: SharedSeries, n: number, h: Rational, problem: GuardProblem, scanner: Scanner): number {
   const form = formOf(shared, n, problem);
   const truncated = truncationError(shared, n, h, problem);
   if (!(truncated < 1)) return Infinity;
   const key = `${n} ${Q.toText(h)}`;
   let evaluated = shared.evaluations.get(key);
   if (evaluated === undefined) {
-    evaluated = Math.max(...shared.sides.map((side) => evaluationBound(form, problem.variable, side, h, { format: problem.format, library: problem.library }, budget)));
+    evaluated = Math.max(...shared.sides.map((side) => evaluationBound(form, side, h, scanner)));
     shared.evaluations.set(key, evaluated);
   }
   const { up } = doubles;
+  // The smallest values of a coarse series may be subnormal where the function is not.
+  if (truncated > 2 ** -11) evaluated += 4 * 2 ** -problem.format.precision;
   return up(truncated + up(evaluated * up(1 + truncated)));
 }
 
@@ -229,7 +233,7 @@ function candidate(form: ExactForm, sides: readonly Side[], setting: Setting, sh
     return total;
   };
   const everywhere = scans.every((s) => s.complete && (s.stretches.length > 0)) ? worst(Q.ZERO) ?? (touches ? null : Math.max(...scans.flatMap((s) => s.stretches.map((p) => p.bound)))) : null;
-  if (everywhere !== null) return { form, scans, series: null, switch: null, seriesBound: null, directBound: everywhere, whole: everywhere };
+  if (everywhere !== null) return { form, scans, series: null, seriesText: '', switch: null, seriesBound: null, directBound: everywhere, whole: everywhere };
   if (!shared || !touches) return null;
   const { format } = problem;
   const distances = [...new Map(scans.flatMap((s) => s.stretches.map((p) => [Q.toText(p.low), p.low] as const))).values()]
@@ -237,6 +241,12 @@ function candidate(form: ExactForm, sides: readonly Side[], setting: Setting, sh
     .map((h) => roundToFormat(h, format.name))
     .filter((h): h is Rational => h !== null)
     .sort((a, b) => Q.compare(a, b));
+  // The series may serve the whole interval.
+  const ends = setting.sides.map((side) => side.to);
+  const [end] = ends;
+  const whole = end && setting.sides.every((side) => Q.isZero(side.from) && side.to && Q.equal(side.to, end)) ? roundToFormat(end, format.name) : null;
+  if (whole && end && Q.equal(whole, end)) distances.push(whole);
+  const beyond = (h: Rational): number | null => (whole && end && Q.compare(h, end) >= 0 ? 0 : worst(h));
   let plateau: Candidate | null = null;
   const found: Candidate[] = [];
   const goal = problem.tolerance ? Q.toDouble(problem.tolerance) : null;
@@ -245,13 +255,13 @@ function candidate(form: ExactForm, sides: readonly Side[], setting: Setting, sh
     // The truncation error grows with h, the direct one falls: the crossing is found among the ends of stretches.
     let best: Candidate | null = null;
     for (const h of distances) {
-      const direct = worst(h);
+      const direct = beyond(h);
       if (direct === null) continue;
       const truncated = truncationError(shared, n, h, problem);
       if (best && truncated > best.whole) break;
-      const series = seriesError(shared, n, h, problem, budget);
-      const whole = Math.max(series, direct);
-      if (!best || whole < best.whole) best = { form, scans, series: formOf(shared, n, problem), switch: h, seriesBound: series, directBound: direct, whole };
+      const own = seriesError(shared, n, h, problem, scanner);
+      const total = Math.max(own, direct);
+      if (!best || total < best.whole) best = { form, scans, series: formOf(shared, n, problem), seriesText: shared.terms.texts.slice(0, n).join(' + ').replaceAll('+ -', '- '), switch: h, seriesBound: own, directBound: direct === 0 ? null : direct, whole: total };
     }
     if (!best || !Number.isFinite(best.whole)) continue;
     found.push(best);
@@ -288,7 +298,8 @@ function answer(best: Candidate, candidates: readonly Candidate[], problem: Guar
     format,
     comment: commentOf({ function: f, variable, interval: setting.text, format, whole: best.whole, series: best.seriesBound, direct: best.directBound, switchText: best.switch ? shortestDecimal(best.switch, format.name) : null, terms: best.series?.terms ?? null, assumptions: assumptions.slice(setting.proposed ? 1 : 0) }),
     direct: best.form.tree,
-    series: best.series && best.switch && typeof point !== 'string' ? { form: best.series, point, switch: best.switch } : null,
+    ...(problem.prefix === undefined ? {} : { prefix: problem.prefix }),
+    series: best.series && best.switch && typeof point !== 'string' ? { form: best.series, point, switch: best.switch, closed: best.directBound === null } : null,
   });
   return {
     forms: exact.map((c) => ({ tree: c.form.tree, text: toPlain(c.form.tree), bound: c.whole, identities: c.form.identities })),
@@ -315,9 +326,10 @@ function rangesOf(best: Candidate, problem: GuardProblem, setting: Setting): Gua
   };
   const rows: GuardRange[] = [];
   const touches = (direction: 1 | -1): boolean => setting.sides.some((s) => s.direction === direction);
-  const direct = best.directBound ?? 0;
+  const direct = best.directBound;
+  if (direct === null) return [{ from: low, to: high, form: best.seriesText, bound: best.whole }];
   if (touches(-1)) rows.push({ from: low, to: at(Q.negate(best.switch)), form: text, bound: direct });
-  rows.push({ from: touches(-1) ? at(Q.negate(best.switch)) : low, to: touches(1) ? at(best.switch) : high, form: toPlain(best.series.tree), bound: best.seriesBound ?? 0 });
+  rows.push({ from: touches(-1) ? at(Q.negate(best.switch)) : low, to: touches(1) ? at(best.switch) : high, form: best.seriesText, bound: best.seriesBound ?? 0 });
   if (touches(1)) rows.push({ from: at(best.switch), to: high, form: text, bound: direct });
   return rows;
 }

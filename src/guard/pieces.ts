@@ -1,20 +1,20 @@
 /** Where an argument may lie, and local models of every node of a tree there. */
-import { createField } from '../algebra/index.ts';
-import { build, type Expression, Q, type Rational, structureKey, substitute } from '../expression/index.ts';
+import { expand } from '../expand/index.ts';
+import { build, type Expression, Q, type Rational, structureKey, walk } from '../expression/index.ts';
 import { describe } from '../functions/index.ts';
-import { type Budget, budget as budgetOf, Declined } from '../outcome.ts';
+import type { Budget } from '../outcome.ts';
 import { type Ball, ballArithmetic, encloseReal, interval, isElementaryName, type Model, type ModelArithmetic, modelArithmetic, modelOfTree, rationalOf, real, type RealArithmetic, realBallTrees } from '../rigorous/index.ts';
 
 export type BallModel = Model<Ball>;
 
 /**
  * A set of arguments.
- * `near`: x = point + direction * reach * s; `infinite`: x = direction * reach / s; s in [least, 1], least may be 0.
+ * `near`: x = point + direction * reach * s, s in [least, 1], least may be 0. `infinite`: x = direction * reach / s up to |x| = farthest.
  * `plain`: low <= x <= high.
  */
 export type Piece =
   | { readonly kind: 'near'; readonly point: Rational; readonly direction: 1 | -1; readonly reach: Rational; readonly least: number }
-  | { readonly kind: 'infinite'; readonly direction: 1 | -1; readonly reach: Rational; readonly least: number }
+  | { readonly kind: 'infinite'; readonly direction: 1 | -1; readonly reach: Rational; readonly farthest: Rational }
   | { readonly kind: 'plain'; readonly low: Rational; readonly high: Rational };
 
 /** Least and largest size of a quantity, doubles rounded outward. */
@@ -45,24 +45,30 @@ export class PieceModels {
   readonly leaf: BallModel;
   readonly #variable: string;
   readonly #least: number;
+  readonly #denominator: number;
+  readonly #exact: ExactOrders;
   readonly #budget: Budget;
   readonly #known = new Map<Expression, BallModel | null>();
   readonly #byKey = new Map<string, BallModel | null>();
 
-  constructor(variable: string, piece: Piece, budget: Budget, length = LENGTH, precision = PRECISION) {
+  /** `denominator` q: the distance is reach * s^q, so that powers that are multiples of 1/q are powers of s. */
+  constructor(variable: string, piece: Piece, exact: ExactOrders, budget: Budget, { length = LENGTH, precision = PRECISION, denominator = 1 } = {}) {
     this.piece = piece;
+    this.#exact = exact;
+    this.#denominator = piece.kind === 'plain' ? 1 : denominator;
     this.#variable = variable;
     this.#budget = budget;
     this.r = ballArithmetic(precision);
     const { r } = this;
-    this.#least = piece.kind === 'plain' ? 1 : piece.least;
+    this.#least = piece.kind === 'plain' ? 1 : rootDown(piece.kind === 'near' ? piece.least : Q.toDouble(Q.divide(piece.reach, piece.farthest)) * (1 - 2 ** -50), this.#denominator);
     this.m = modelArithmetic(r, piece.kind === 'plain' ? UNIT_BOTH : UNIT_RIGHT, length, piece.kind !== 'plain', r);
     if (piece.kind === 'plain') {
       const middle = Q.divide(Q.add(piece.low, piece.high), Q.rational(2));
       this.leaf = this.m.polynomial([r.fromRational(middle), r.fromRational(Q.subtract(piece.high, middle))]);
     } else {
       const reach = r.fromRational(Q.multiply(piece.reach, Q.rational(piece.direction)));
-      this.leaf = piece.kind === 'near' ? this.m.polynomial([r.fromRational(piece.point), reach]) : this.m.polynomial([reach], -1);
+      const gap = Array.from({ length: this.#denominator - 1 }, () => r.zero);
+      this.leaf = piece.kind === 'near' ? this.m.polynomial([r.fromRational(piece.point), ...gap, reach]) : this.m.polynomial([reach], -this.#denominator);
     }
   }
 
@@ -144,15 +150,19 @@ export class PieceModels {
     return modelOfTree(e, { m: this.m, trees: realBallTrees(PRECISION), real: this.r, describe, environment, check: () => this.#budget.check() });
   }
 
-  /** A leading coefficient that only seems to vanish at the point is settled by the exact zero test. */
+  /** Leading coefficients that only seem to vanish are dropped where the exact expansion has no term there. */
   #settled(e: Expression, value: BallModel | null): BallModel | null {
     const { piece, r, m } = this;
     const lead = value?.coefficients[0];
-    if (!value || lead === undefined || piece.kind !== 'near' || value.valuation !== 0 || r.isZero(lead) || !r.containsZero(lead)) return value;
-    if (!isExactlyZero(substitute(e, this.#variable, build.number(piece.point)))) return value;
-    const rest = m.polynomial([r.zero, ...value.coefficients.slice(1)]);
-    const length = value.coefficients.length;
-    return r.isZero(value.tail) ? rest : m.add(rest, { valuation: length, coefficients: [], tail: value.tail, range: value.tail });
+    if (!value || lead === undefined || piece.kind === 'plain' || r.isZero(lead) || !r.containsZero(lead)) return value;
+    const order = this.#exact.at(e, piece, this.#budget);
+    if (!order) return value;
+    const power = Q.multiply(order, Q.rational(this.#denominator));
+    const drop = power.den === 1n ? Number(power.num) - value.valuation : 0;
+    if (drop <= 0 || drop > value.coefficients.length) return value;
+    const rest = m.polynomial(value.coefficients.slice(drop), value.valuation + drop);
+    const end = value.valuation + value.coefficients.length;
+    return r.isZero(value.tail) ? rest : m.add(rest, { valuation: end, coefficients: [], tail: value.tail, range: value.tail });
   }
 
   /** Size of a modelled quantity over the piece. */
@@ -161,6 +171,20 @@ export class PieceModels {
     const power = powerSize(this.#least, model.valuation);
     const [least, most] = [interval.leastSize(box), interval.size(box)];
     return { least: Math.max(0, down(least * power.least)), most: most === 0 ? 0 : up(most * power.most) };
+  }
+
+  /** Whether the quantity, changed by the factor 1 + relative and by `tiny`, stays below the limit: in balls, for what comes close to the largest float. */
+  staysBelow(model: BallModel, relative: number, tiny: number, limit: Rational): boolean {
+    const { r, piece } = this;
+    if (!Number.isFinite(relative) || !Number.isFinite(tiny)) return false;
+    let most: Ball | null = real.upperEnd(real.absolute(model.range));
+    if (piece.kind === 'infinite' && model.valuation < 0) {
+      const growth = r.powerRational(r.fromRational(Q.divide(piece.farthest, piece.reach)), Q.rational(-model.valuation, this.#denominator));
+      most = growth && r.multiply(most, growth);
+    }
+    if (!most) return false;
+    const changed = r.add(r.multiply(most, r.add(r.one, real.fromDouble(relative))), real.fromDouble(tiny));
+    return r.isNegative(r.subtract(changed, r.fromRational(limit)));
   }
 
   /** Largest size of a/b; infinite where b may vanish without a. */
@@ -182,12 +206,41 @@ export class PieceModels {
   }
 }
 
-export function isExactlyZero(e: Expression): boolean {
-  try {
-    const field = createField([], budgetOf(200));
-    return field.isZero(field.fromExpression(e)) === 'yes' && field.needed.size === 0;
-  } catch (error) {
-    if (error instanceof Declined) return false;
-    throw error;
+/** x^(1/q), rounded down. */
+function rootDown(x: number, q: number): number {
+  return q === 1 || x === 0 ? x : down(x ** (1 / q) * (1 - 2 ** -40));
+}
+
+/** Leading powers at a point, from exact expansions; each is found once. */
+export class ExactOrders {
+  readonly #variable: string;
+  readonly #known = new Map<string, Rational | null>();
+
+  constructor(variable: string) {
+    this.#variable = variable;
   }
+
+  /** The power of the distance (of 1/x at infinity) that the tree begins with on that side; null where it is none. */
+  at(e: Expression, piece: Exclude<Piece, { readonly kind: 'plain' }>, budget: Budget): Rational | null {
+    const key = `${piece.kind === 'near' ? Q.toText(piece.point) : 'inf'} ${piece.direction} ${structureKey(e)}`;
+    let found = this.#known.get(key);
+    if (found === undefined) {
+      const point = piece.kind === 'near' ? build.number(piece.point) : piece.direction > 0 ? 'inf' : '-inf';
+      const result = expand({ function: e, variable: build.symbol(this.#variable), point, side: piece.kind === 'infinite' ? 'both' : piece.direction > 0 ? 'right' : 'left', terms: 1, assumptions: [] }, budget);
+      const [term] = result.ok && !result.value.prefactor ? result.value.terms : [];
+      found = term && term.log === 0 && !term.scale ? rationalOf(term.power) : null;
+      this.#known.set(key, found);
+    }
+    return found;
+  }
+}
+
+/** The least common denominator of the powers in a tree. */
+export function powerDenominator(e: Expression): number {
+  let q = 1n;
+  for (const node of walk(e)) {
+    const den = node.kind === 'power' && node.exponent.kind === 'number' ? node.exponent.value.den : node.kind === 'root' && node.degree.kind === 'number' ? node.degree.value.num : node.kind === 'call' && node.function === 'sqrt' ? 2n : 1n;
+    if (den > 1n) q = (q * den) / Q.gcd(q, den);
+  }
+  return q > 12n ? 1 : Number(q);
 }

@@ -2,7 +2,8 @@
 import { type Expression, Q, type Rational } from '../expression/index.ts';
 import type { Budget } from '../outcome.ts';
 import { binaryExponent, powerOfTwo } from '../write/index.ts';
-import { type Piece, PieceModels } from './pieces.ts';
+import { interval } from '../rigorous/index.ts';
+import { ExactOrders, type Piece, PieceModels, powerDenominator } from './pieces.ts';
 import { type Machine, Roundoff } from './roundoff.ts';
 
 /** Arguments x = point + direction * d with `from` < d <= `to` (distances); `to` null reaches to the largest float. With `from` zero d comes arbitrarily close to the point. */
@@ -39,6 +40,7 @@ export class Scanner {
   readonly machine: Machine;
   readonly budget: Budget;
   readonly #unit: number;
+  readonly orders: ExactOrders;
   readonly #models = new Map<string, PieceModels>();
 
   constructor(variable: string, machine: Machine, budget: Budget) {
@@ -46,21 +48,43 @@ export class Scanner {
     this.machine = machine;
     this.budget = budget;
     this.#unit = 2 ** -machine.format.precision;
+    this.orders = new ExactOrders(variable);
   }
 
   /** Models are shared by the forms that are looked at on the same piece. */
-  models(piece: Piece): PieceModels {
-    const key = pieceKey(piece);
+  models(piece: Piece, denominator = 1): PieceModels {
+    const key = `${pieceKey(piece)} ${denominator}`;
     let found = this.#models.get(key);
-    if (!found) this.#models.set(key, (found = new PieceModels(this.variable, piece, this.budget)));
+    if (!found) this.#models.set(key, (found = new PieceModels(this.variable, piece, this.orders, this.budget, { denominator })));
     return found;
   }
 
   /** Relative error on a piece; null where nothing could be proved. */
   bound(form: Expression, piece: Piece): number | null {
     this.budget.check();
-    const value = new Roundoff(this.models(piece), this.machine).relativeError(form);
+    const own = this.#boundWith(form, piece, 1);
+    const q = own === null && piece.kind !== 'plain' ? powerDenominator(form) : 1;
+    return q > 1 ? this.#boundWith(form, piece, q) : own;
+  }
+
+  #boundWith(form: Expression, piece: Piece, denominator: number): number | null {
+    const models = this.models(piece, denominator);
+    const normal = this.#normalPart(form, piece, models, denominator);
+    const value = new Roundoff(normal, this.machine).relativeError(form);
     return value !== null && Number.isFinite(value) ? value : null;
+  }
+
+  /** Where the value vanishes at the point, only distances at which it can be a normal number are promised anything. */
+  #normalPart(form: Expression, piece: Piece, models: PieceModels, denominator: number): PieceModels {
+    if (piece.kind !== 'near' || piece.least > 0) return models;
+    const model = models.of(form);
+    if (!model || model.valuation <= 0) return models;
+    const most = interval.size(interval.fromBall(model.range));
+    if (!(most > 0 && most < Infinity)) return models;
+    const { emin, precision } = this.machine.format;
+    const s = (2 ** emin * (precision < 20 ? 0.5 : 1 - 2 ** -10) / most) ** (1 / model.valuation) * (1 - 2 ** -30);
+    const least = s ** denominator * (1 - 2 ** -30);
+    return least > 0 && least < 1 ? this.models({ ...piece, least }, denominator) : models;
   }
 
   /** From the far end of the side towards the point, as far as the form keeps a bound of any use. */
@@ -76,9 +100,15 @@ export class Scanner {
     let far: Rational;
     if (side.to === null) {
       const start = startOfTail(side);
-      const bound = this.#tail(form, side, start);
-      if (bound === null) return broken();
-      add(distanceOf(side, start), null, bound);
+      const { precision, emax } = this.machine.format;
+      const largestFloat = Q.subtract(powerOfTwo(emax + 1), powerOfTwo(emax + 1 - precision));
+      // The topmost piece is short, so that sizes there are tight against the largest float.
+      const top = powerOfTwo(emax - 20);
+      const bounds = [{ reach: top, farthest: largestFloat }, { reach: start, farthest: top }].map((p) => this.bound(form, { kind: 'infinite', direction: side.direction, ...p }));
+      const [high, middle] = bounds;
+      if (typeof high !== 'number' || typeof middle !== 'number' || hopeless(high) || hopeless(middle)) return broken();
+      add(distanceOf(side, top), null, high);
+      add(distanceOf(side, start), distanceOf(side, top), middle);
       far = distanceOf(side, start);
     } else far = side.to;
     const nearStart = nearZone(side, far);
@@ -122,12 +152,6 @@ export class Scanner {
     return { stretches, complete: Q.compare(far, side.from) <= 0 };
   }
 
-  #tail(form: Expression, side: Side, start: Rational): number | null {
-    const { precision, emax } = this.machine.format;
-    const largestFloat = Q.subtract(powerOfTwo(emax + 1), powerOfTwo(emax + 1 - precision));
-    return this.bound(form, { kind: 'infinite', direction: side.direction, reach: start, least: ratio(start, largestFloat) });
-  }
-
   /** A piece away from the point, cut while that helps. */
   #plain(form: Expression, side: Side, low: Rational, high: Rational, depth: number): Stretch[] | null {
     const [a, b] = [Q.add(side.point, Q.multiply(low, Q.rational(side.direction))), Q.add(side.point, Q.multiply(high, Q.rational(side.direction)))];
@@ -157,7 +181,7 @@ export function worstBeyond({ stretches }: Scan, h: Rational): number | null {
 }
 
 const pieceKey = (p: Piece): string =>
-  p.kind === 'plain' ? `${Q.toText(p.low)} ${Q.toText(p.high)}` : `${p.kind} ${p.kind === 'near' ? Q.toText(p.point) : ''} ${p.direction} ${Q.toText(p.reach)} ${p.least}`;
+  p.kind === 'plain' ? `${Q.toText(p.low)} ${Q.toText(p.high)}` : `${p.kind} ${p.kind === 'near' ? Q.toText(p.point) : ''} ${p.direction} ${Q.toText(p.reach)} ${p.kind === 'near' ? p.least : Q.toText(p.farthest)}`;
 
 const largest = (a: Rational, b: Rational): Rational => (Q.compare(a, b) >= 0 ? a : b);
 /** low/high as a double rounded down; both are short floats or their quotient is. */

@@ -6,7 +6,7 @@
  * from the point, so that 0/0 and what cancels exactly there do not spoil them.
  * A sum with a product in it may be contracted to one fused operation: that drops a rounding whose bound stays in the sum.
  */
-import { build, type Expression, Q } from '../expression/index.ts';
+import { build, type Expression, Q, type Rational } from '../expression/index.ts';
 import type { FloatFormat } from '../fit/index.ts';
 import { describe } from '../functions/index.ts';
 import { interval, rationalOf } from '../rigorous/index.ts';
@@ -43,6 +43,8 @@ export class Roundoff {
   readonly #halfTiny: number;
   readonly #normal: number;
   readonly #largest: number;
+  /** Where rounding to nearest overflows. */
+  readonly #limit: Rational;
   readonly #known = new Map<Expression, Computed | null>();
 
   constructor(models: PieceModels, machine: Machine) {
@@ -52,6 +54,7 @@ export class Roundoff {
     this.#unit = 2 ** -precision;
     this.#halfTiny = Math.max(2 ** (emin - precision), Number.MIN_VALUE);
     this.#normal = 2 ** emin;
+    this.#limit = Q.subtract(powerOfTwo(emax + 1), powerOfTwo(emax - precision));
     this.#largest = 2 ** emax * (2 - 2 ** (1 - precision));
   }
 
@@ -130,14 +133,21 @@ export class Roundoff {
   #rounded(model: BallModel, relative: number, tiny: number, absolute: number, unit: number): Computed | null {
     const { least, most } = this.models.size(model);
     const highest = Math.min(plus(times(most, 1 + relative), tiny), plus(most, absolute));
-    if (!(highest <= this.#largest)) return null;
+    if (!(highest <= this.#largest) && !this.models.staysBelow(model, relative, tiny, this.#limit)) return null;
     const lowest = Math.max(0, down(down(least * down(1 - Math.min(1, relative))) - tiny), down(least - absolute));
     const e = lowest > 0 ? exponentOf(lowest) : null;
     // Inside one binade half an ulp is at most u 2^e / |y|.
     const own = e !== null && highest < 2 ** (e + 1) && lowest >= this.#normal ? Math.min(unit, up((unit * 2 ** e) / lowest)) : unit;
-    const flush = lowest >= this.#normal ? 0 : up(this.#halfTiny * Math.max(1, unit / this.#unit));
-    const whole = compound(relative, own);
-    const lost = plus(times(tiny, 1 + own), flush);
+    // Just below the smallest normal number half a subnormal step is still no more than u times the value, nearly.
+    const brink = lowest < this.#normal && lowest >= this.#normal * (1 - 2 ** -9);
+    const flush = lowest >= this.#normal || brink ? 0 : up(this.#halfTiny * Math.max(1, unit / this.#unit));
+    let whole = compound(relative, brink ? times(Math.max(own, this.#unit), 1 + 2 ** -8) : own);
+    let lost = plus(times(tiny, 1 + own), flush);
+    // Lost digits that are nothing beside the value join its relative error.
+    if (lost > 0 && over(lost, least) <= this.#unit * 2 ** -10) {
+      whole = plus(whole, over(lost, least));
+      lost = 0;
+    }
     return { model, relative: whole, tiny: lost, absolute: Math.min(plus(times(whole, most), lost), plus(plus(absolute, times(own, highest)), flush)) };
   }
 

@@ -4,10 +4,10 @@ import { build, type Expression, Q, type Rational } from '../expression/index.ts
 import { describe } from '../functions/index.ts';
 import type { Budget } from '../outcome.ts';
 import { encloseReal, interval, rationalOf, real } from '../rigorous/index.ts';
-import { polynomialForm, type PolynomialTerm, roundToFormat, type Step } from '../write/index.ts';
-import { PieceModels } from './pieces.ts';
-import { near, type Side } from './region.ts';
-import { type Machine, Roundoff } from './roundoff.ts';
+import { polynomialForm, type PolynomialTerm, roundToFormat, type Step, termTree, toPlain } from '../write/index.ts';
+import { type ExactOrders, PieceModels } from './pieces.ts';
+import { near, type Scanner, type Side } from './region.ts';
+import type { Machine } from './roundoff.ts';
 
 export interface SeriesForm {
   readonly terms: number;
@@ -22,6 +22,8 @@ export interface SeriesTerms {
   readonly powers: readonly number[];
   /** Rounded to the format. */
   readonly coefficients: readonly Rational[];
+  /** The exact terms as written. */
+  readonly texts: readonly string[];
 }
 
 const COEFFICIENT_BITS = 256;
@@ -33,6 +35,7 @@ export function seriesTerms(f: Expression, variable: string, point: Rational, co
   if (!found.ok || found.value.prefactor || found.value.left || found.value.terms.length === 0 || found.value.divergent) return null;
   const powers: number[] = [];
   const coefficients: Rational[] = [];
+  const texts: string[] = [];
   for (const term of found.value.terms) {
     const power = rationalOf(term.power);
     if (term.log !== 0 || term.scale || !power || power.den !== 1n || power.num > BigInt(MOST_POWER) || power.num < -8n) break;
@@ -43,8 +46,9 @@ export function seriesTerms(f: Expression, variable: string, point: Rational, co
     if (!rounded || Q.isZero(rounded)) break;
     powers.push(Number(power.num));
     coefficients.push(rounded);
+    texts.push(toPlain(termTree(found.value, term)));
   }
-  return powers.length === 0 ? null : { powers, coefficients, exact: found.value.exact && powers.length === found.value.terms.length };
+  return powers.length === 0 ? null : { powers, coefficients, texts, exact: found.value.exact && powers.length === found.value.terms.length };
 }
 
 /** Names for the offset from the point and its powers, kept clear of the variable. */
@@ -95,10 +99,10 @@ export class Truncation {
   readonly #f: Expression;
   readonly #known = new Map<Expression, { readonly valuation: number; readonly sizes: readonly number[] } | null>();
 
-  constructor(f: Expression, variable: string, side: Side, reach: Rational, budget: Budget) {
+  constructor(f: Expression, variable: string, side: Side, reach: Rational, orders: ExactOrders, budget: Budget) {
     this.reach = reach;
     this.#f = f;
-    this.#models = new PieceModels(variable, near(side, reach, 0), budget, MODEL_LENGTH, 320);
+    this.#models = new PieceModels(variable, near(side, reach, 0), orders, budget, { length: MODEL_LENGTH, precision: 320 });
   }
 
   get usable(): boolean {
@@ -125,6 +129,4 @@ export class Truncation {
 }
 
 /** Rounding of the series for every distance up to h. */
-export function evaluationBound(form: SeriesForm, variable: string, side: Side, h: Rational, machine: Machine, budget: Budget): number {
-  return new Roundoff(new PieceModels(variable, near(side, h, 0), budget), machine).relativeError(form.tree) ?? Infinity;
-}
+export const evaluationBound = (form: SeriesForm, side: Side, h: Rational, scanner: Scanner): number => scanner.bound(form.tree, near(side, h, 0)) ?? Infinity;

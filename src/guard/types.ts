@@ -17,7 +17,9 @@ export interface GuardProblem {
   readonly tolerance?: Rational;
   /** Assumed error of a library call in ulp. */
   readonly library: number;
-  /** Functions that have no library call here, or may not be called. */
+  /** How the file calls its library (`np.`). */
+  readonly prefix?: string;
+  /** Also a guard of the derivative. */
   readonly derivative?: boolean;
 }
 

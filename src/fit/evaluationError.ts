@@ -9,7 +9,7 @@
 import { type Expression, Q, type Rational } from '../expression/index.ts';
 import { Declined } from '../outcome.ts';
 import { type Interval, interval } from '../rigorous/index.ts';
-import { binaryExponent, type FloatFormat, isRepresentable, powerOfTwo } from './format.ts';
+import { binaryExponent, type FixedFormat, type FloatFormat, isRepresentable, type NumberFormat, powerOfTwo } from './format.ts';
 import type { Arithmetic, Program } from './program.ts';
 
 export interface RoundedValue {
@@ -76,6 +76,12 @@ function rounded(exact: Exact, absolute: number, format: FloatFormat, scaled = i
 
 const withError = ({ exact, atLow, atHigh, slope }: Exact, absolute: number, before: number): RoundedValue => ({ exact, absolute, before, atLow, atHigh, slope });
 
+/** Every intermediate value must be a number of the format. */
+function withinFixed(exact: Exact, absolute: number, { integerBits, name }: FixedFormat): RoundedValue {
+  if (!(addUp(interval.size(exact.exact), up(absolute / SCALE)) < 2 ** integerBits)) throw new Declined('bad-request', `An intermediate value can overflow ${name} on this interval; take more bits before the point or a smaller interval.`);
+  return withError(exact, absolute, absolute);
+}
+
 const productError = (a: RoundedValue, b: RoundedValue): number =>
   addUp(addUp(mulUp(interval.size(a.exact), b.absolute), mulUp(interval.size(b.exact), a.absolute)), mulUp(a.absolute, up(b.absolute / SCALE)));
 
@@ -100,15 +106,15 @@ function sterbenz(a: RoundedValue, b: RoundedValue): boolean {
 }
 
 /** Constants are looked at once per format, not once per piece. */
-const numbers = new WeakMap<Expression, { readonly format: FloatFormat; readonly value: RoundedValue; readonly power: number | null }>();
+const numbers = new WeakMap<Expression, { readonly format: NumberFormat; readonly value: RoundedValue; readonly power: number | null }>();
 
 /** Evaluates a program's trees over one argument interval, step by step. */
 class Evaluator {
   readonly #values: Map<string, RoundedValue>;
   readonly #width: number;
-  readonly #format: FloatFormat;
+  readonly #format: NumberFormat;
 
-  constructor(values: Map<string, RoundedValue>, width: number, format: FloatFormat) {
+  constructor(values: Map<string, RoundedValue>, width: number, format: NumberFormat) {
     this.#values = values;
     this.#width = width;
     this.#format = format;
@@ -132,7 +138,7 @@ class Evaluator {
         return { absolute: inner.absolute, before: inner.before, exact: interval.negate(inner.exact), atLow: interval.negate(inner.atLow), atHigh: interval.negate(inner.atHigh), slope: interval.negate(inner.slope) };
       }
       case 'sum':
-        return e.terms.map((t) => this.visit(t)).reduce((a, b) => (sterbenz(a, b) ? withError(this.#sum(a, b), 0, 0) : rounded(this.#sum(a, b), addUp(a.absolute, b.absolute), this.#format)));
+        return e.terms.map((t) => this.visit(t)).reduce((a, b) => this.#added(a, b));
       case 'product':
         return this.#product(e.factors);
       case 'quotient':
@@ -142,6 +148,7 @@ class Evaluator {
         if (e.function !== 'fma' || !x || !y || !z) throw new Declined('bad-request', `The call of ${e.function} is not part of a polynomial.`);
         const error = productError(x, y);
         const inner = withError(this.#times(x, y), error, error);
+        if (this.#format.kind === 'fixed') throw new Declined('bad-request', 'Fixed-point code has no fused multiply-add; ask for the contraction any or none.');
         return rounded(this.#sum(inner, z), addUp(inner.absolute, z.absolute), this.#format);
       }
       default:
@@ -156,6 +163,13 @@ class Evaluator {
     const value = exactValue(interval.fromRational(e.value));
     numbers.set(e, { format: this.#format, value, power: powerOfTwoFactor(e) });
     return value;
+  }
+
+  #added(a: RoundedValue, b: RoundedValue): RoundedValue {
+    const sum = this.#sum(a, b);
+    // Sums of fixed-point numbers are exact while they do not overflow.
+    if (this.#format.kind === 'fixed') return withinFixed(sum, addUp(a.absolute, b.absolute), this.#format);
+    return sterbenz(a, b) ? withError(sum, 0, 0) : rounded(sum, addUp(a.absolute, b.absolute), this.#format);
   }
 
   #sum(a: Exact, b: Exact): Exact {
@@ -179,6 +193,10 @@ class Evaluator {
       const factor = left;
       const whole = this.#times(left, value);
       const error = productError(left, value);
+      if (this.#format.kind === 'fixed') {
+        left = withinFixed(whole, addUp(error, 2 ** (ERROR_BITS - this.#format.fractionBits - 1)), this.#format);
+        continue;
+      }
       const k = leftPower ?? numbers.get(node)?.power ?? null;
       leftPower = null;
       // By a power of two of at least one nothing is lost; by a smaller one only digits below the smallest subnormal.
@@ -196,6 +214,7 @@ class Evaluator {
     if (!exact || !atLow || !atHigh || !slope || !(least > 0)) throw new Declined('bad-request', 'A divisor can be zero on this interval; take a smaller interval.');
     const range = sharpened(exact, atLow, atHigh, slope, this.#width);
     const absolute = up(addUp(a.absolute, mulUp(interval.size(range.exact), b.absolute)) / least);
+    if (this.#format.kind === 'fixed') throw new Declined('bad-request', 'Quotients are not written as fixed-point code.');
     return rounded(range, absolute, this.#format);
   }
 }
@@ -271,4 +290,11 @@ export function approximateValue({ steps, result }: Program, variable: string, x
   };
   for (const step of steps) values.set(step.name, visit(step.value));
   return visit(result);
+}
+
+/** The same for a program in fixed point: products round to nearest by half a unit, sums are exact, every value stays inside the format. */
+export function fixedEvaluationError(program: Program, variable: string, argument: Interval, format: FixedFormat): RoundedValue {
+  const evaluator = new Evaluator(new Map([[variable, argumentValue(argument)]]), interval.width(argument), format);
+  for (const step of program.steps) evaluator.define(step.name, evaluator.visit(step.value));
+  return evaluator.visit(program.result);
 }

@@ -4,7 +4,9 @@ import { attempt, type Budget, Declined, type Outcome } from '../outcome.ts';
 import { real } from '../rigorous/index.ts';
 import { codeLanguage, type PolynomialTerm, toPlain } from '../write/index.ts';
 import { type FitCodeText, fitCode, functionName, fusing, machineArithmetic, rowFor } from './code.ts';
-import type { FloatFormat, NumberFormat } from './format.ts';
+import { fixedCode, requireIntegers } from './fixedCode.ts';
+import { fitFixedPoint } from './fixedFit.ts';
+import type { FixedFormat, FloatFormat, NumberFormat } from './format.ts';
 import { splitFit } from './pieces.ts';
 import { type PolynomialFit, fitPolynomial, type PolynomialProblem } from './polynomialFit.ts';
 import type { Program } from './program.ts';
@@ -66,7 +68,7 @@ export const fit = (problem: FitProblem, budget: Budget): Outcome<Fit> => attemp
 function fitted(problem: FitProblem, budget: Budget): Fit {
   const { format, language, contraction, method } = problem;
   const row = rowFor(language);
-  if (format.kind === 'fixed') throw new Declined('bad-request', 'Fixed-point formats are not fitted in this version; choose binary32 or binary64.');
+  if (format.kind === 'fixed') return fixedPoint(problem, format, budget);
   if (method === 'rational') throw new Declined('bad-request', 'Rational forms are not fitted in this version; choose the method minimax.');
   if (!row.floats[format.name]) throw new Declined('bad-request', `${row.title} has no ${format.name} type; choose another format or language.`);
   const fused = contraction === 'fma' ? fusing(language, format) : 'never';
@@ -92,6 +94,21 @@ function fitted(problem: FitProblem, budget: Budget): Fit {
   const degree = Math.max(...parts.map((p) => p.found.degree));
   const pieces = parts.length === 1 ? {} : { pieces: parts.map(({ low, high, found }) => ({ low, high, terms: found.terms, degree: found.degree, centre: found.centre, error: found.error })) };
   return { terms: first.found.terms, format, degree, centre: first.found.centre, program: first.found.writtenProgram, error, ...pieces, method: methodText(problem), code, assumptions };
+}
+
+function fixedPoint(problem: FitProblem, format: FixedFormat, budget: Budget): Fit {
+  const { language } = problem;
+  requireIntegers(language, format);
+  if (problem.method !== 'minimax') throw new Declined('bad-request', 'Fixed-point coefficients are fitted by the method minimax only; leave the method out.');
+  if (problem.pieces !== 1) throw new Declined('bad-request', 'Fixed-point fits are made on one interval; ask for each piece by itself.');
+  if (problem.result === 'expression') throw new Declined('bad-request', 'Fixed-point code is a function with a helper; ask for the result function.');
+  const found = fitFixedPoint(problem, format, budget);
+  const { fractionBits: n, integerBits: m } = format;
+  const assumptions = [`argument and result are integers that stand for multiples of 2^-${n}`, 'a right shift of a negative number rounds down', `no value overflows: proved for every intermediate result (|value| < 2^${m})`];
+  const variable = /^[a-z][A-Za-z0-9]*$/.test(problem.variable) && !['a', 'b'].includes(problem.variable) ? problem.variable : 'x';
+  const program = variable === problem.variable ? found.program : renamed(found.program, problem.variable, variable);
+  const code = fixedCode(program, variable, format, language, functionName(wordsFor(problem.function), language), commentOf(problem, { name: `fixed point with ${n} bits behind the point`, argument: `multiple of 2^-${n}` }, found.error, assumptions));
+  return { terms: found.terms, format, degree: found.degree, centre: Q.ZERO, program, error: found.error, method: methodText(problem), code, assumptions };
 }
 
 const greater = (a: Rational, b: Rational): Rational => (Q.compare(a, b) >= 0 ? a : b);
@@ -157,14 +174,14 @@ function assumptionsOf({ language, contraction }: FitProblem, { name }: FloatFor
 const MEASURES: Readonly<Record<FitMeasure, string>> = { absolute: 'absolute error', relative: 'relative error', ulp: 'error in ulp' };
 const WIDTH = 92;
 
-function commentOf(problem: FitProblem, format: FloatFormat, error: ProvedError, assumptions: readonly string[]): string[] {
+function commentOf(problem: FitProblem, format: { readonly name: string; readonly argument?: string }, error: ProvedError, assumptions: readonly string[]): string[] {
   const [low, high] = problem.intervalText;
   const total = real.rationalToDecimal(error.total, 4, 1);
   const subnormal = error.subnormal ? ` (where the function is below the smallest normal number: absolute error at most ${real.rationalToDecimal(error.subnormal, 4, 1)})` : '';
   const unit = problem.measure === 'ulp' ? ' ulp' : '';
   return [
     `${toPlain(problem.function)} for ${problem.variable.replace(/\\/g, '')} in [${low}, ${high}], ${format.name}.`,
-    `Proven for every ${format.name} argument in the interval, evaluation included: ${MEASURES[problem.measure].replace(' in ulp', '')} at most ${total}${unit}${subnormal}.`,
+    `Proven for every ${format.argument ?? `${format.name} argument`} in the interval, evaluation included: ${MEASURES[problem.measure].replace(' in ulp', '')} at most ${total}${unit}${subnormal}.`,
     `Assumes: ${assumptions.join('; ')}.`,
     'Valid only on this interval and in this format. In safety-related code follow your own standards and have it reviewed by qualified people.',
   ].flatMap(filled);

@@ -4,8 +4,8 @@ import { build, type CallNode, type Expression, Q } from '../expression/index.ts
 import { acceptsArity, describe, type FunctionDescription } from '../functions/index.ts';
 import { Declined } from '../outcome.ts';
 import {
-  add, divide, eventualSign, exactOf, exponential, growth, hyperbolic, imaginaryPart, inverse, type InverseFunction, isRealMulti, logarithm, mapConstants, type Multi, multiply, negate, power, realPart,
-  Series, sineCosine, split, subtract, withExact,
+  add, divide, eventualSign, exactOf, exponential, growth, hyperbolic, imaginaryPart, inverse, type InverseFunction, isEvenLead, isRealMulti, leading, logarithm, mapConstants, type Multi, multiply, negate, noteSides, power, realPart,
+  scaleBy, Series, sineCosine, split, subtract, withExact,
 } from '../series/index.ts';
 import { evaluateDescribed, refusePole } from './described.ts';
 import type { Session } from './session.ts';
@@ -14,6 +14,8 @@ export type Evaluate = (s: Session, e: Expression) => Multi;
 
 export function evaluateCall(s: Session, e: CallNode, evaluate: Evaluate): Multi {
   const c = s.context;
+  const size = logarithmOfSize(s, e, evaluate);
+  if (size !== null) return size;
   const undone = inverseOfItself(s, e, evaluate);
   if (undone !== null) return undone;
   const args = e.args.map((a) => evaluate(s, a));
@@ -57,6 +59,15 @@ function inverseOfItself(s: Session, e: CallNode, evaluate: Evaluate): Multi | n
   const pi = c.field.fromExpression(build.constant('pi'));
   const [low, high] = e.function === 'acos' ? [Q.ZERO, pi] : [c.field.multiply(pi, Q.rational(-1, 2)), c.field.multiply(pi, Q.HALF)];
   return c.field.compare(constant, low) === 1 && c.field.compare(constant, high) === -1 ? u : null;
+}
+
+/** log|u| = log(u^2)/2 for real u: the same on both sides. */
+function logarithmOfSize(s: Session, e: CallNode, evaluate: Evaluate): Multi | null {
+  const [inner] = e.args;
+  if (e.function !== 'log' || inner?.kind !== 'call' || inner.function !== 'abs' || !inner.args[0]) return null;
+  const u = evaluate(s, inner.args[0]);
+  if (!(u instanceof Series) || !isRealMulti(s.context, u)) return null;
+  return withExact(scaleBy(s.context, logarithm(s.context, multiply(s.context, u, u)), Q.HALF), () => build.call('log', build.call('abs', exactOf(s.context, u))));
 }
 
 /** The same call of the same series is the same result. */
@@ -156,9 +167,11 @@ function realSign(s: Session, f: Multi): -1 | 0 | 1 | 'complex' {
   return isRealMulti(s.context, f) ? eventualSign(s.context, f) : 'complex';
 }
 
-/** A function of the sign of f is the same on both sides only if f keeps away from zero. */
+/** A function of the sign of f is the same on both sides only if f keeps away from zero or behaves like an even power of t. */
 function noteSide(s: Session, f: Multi): void {
-  if (growth(s.context, f) !== 'finite') s.context.notes.sided = true;
+  if (growth(s.context, f) === 'finite') return;
+  const lead = f instanceof Series ? leading(s.context, f) : null;
+  noteSides(s.context, lead === null || (f instanceof Series && isEvenLead(lead, f.element)));
 }
 
 function rounded(s: Session, f: Multi, floor: (q: { num: bigint; den: bigint }) => bigint): Multi {

@@ -3,7 +3,7 @@ import type { Element } from '../algebra/types.ts';
 import { build, type CallNode, type Expression, Q, type Rational, walk } from '../expression/index.ts';
 import { acceptsArity, describe, type FormalSeries, type FunctionDescription, type LocalForm, type Place } from '../functions/index.ts';
 import { Declined } from '../outcome.ts';
-import { add, alongDerivative, beyondAllOrders, compose, type Context, eventualSign, exactOf, finiteStream, growth, isRational, leading, monomial, type Multi, multiply, plainText, scaleBy, Series, signOfExponent, split, withExact } from '../series/index.ts';
+import { add, alongDerivative, beyondAllOrders, compose, type Context, eventualSign, exactOf, finiteStream, growth, isRational, isRealMulti, leading, monomial, type Multi, multiply, plainText, scaleBy, Series, signOfExponent, split, withExact } from '../series/index.ts';
 import type { Evaluate } from './calls.ts';
 import { bind, freshSymbol, type Session } from './session.ts';
 import { aroundSlowPart } from './slow-part.ts';
@@ -78,10 +78,10 @@ function inOneArgument(s: Session, d: FunctionDescription, args: readonly Multi[
     kind: 'finite',
     center: exactOf(c, constant),
     offset: build.symbol(offset),
-    side: sign === 1 ? 'right' : sign === -1 ? 'left' : 'complex',
+    side: sign === 'complex' || sign === 0 || !isRealMulti(c, small) ? 'complex' : 'both',
   };
   const form = d.local?.(trees, index, place) ?? null;
-  if (form) return evaluateForm(bind(s, [[(z as { name: string }).name, f], [offset, small]]), form, evaluate);
+  if (form) return evaluateForm(bind(s, [[(z as { name: string }).name, f], [offset, small]]), form, evaluate, place.side === 'both');
   const constants = trees.map((t, k) => (k === index ? exactOf(c, constant) : t));
   const taylor = taylorFromEquation(c, d, constants, index, constant);
   if (taylor) return compose(c, taylor, small);
@@ -131,7 +131,7 @@ export function refusePole(s: Session, d: FunctionDescription, args: readonly El
     const u = scaleBy(c, monomial(c, c.scale.local, Q.ONE), Q.rational(side === 'right' ? 1 : -1));
     const notes = { ...c.notes };
     const value = evaluateForm(bind(s, [[offset, u], [z, add(c, at, u)]]), form, evaluate);
-    Object.assign(c.notes, { sided: notes.sided, divergent: notes.divergent });
+    Object.assign(c.notes, { sided: notes.sided, onReal: notes.onReal, divergent: notes.divergent, complex: notes.complex });
     const first = value instanceof Series ? value.stream.at(0) : null;
     if (!first || !(value instanceof Series)) continue;
     const order = signOfExponent(c, first.exponent);
@@ -140,10 +140,10 @@ export function refusePole(s: Session, d: FunctionDescription, args: readonly El
   }
 }
 
-/** Evaluates a local form: its formal series become series of their arguments, then its body. */
-export function evaluateForm(s: Session, form: LocalForm, evaluate: Evaluate): Multi {
+/** Evaluates a local form: its formal series become series of their arguments, then its body. `twoSided`: the form holds on both sides of its place, so that only the body can tell them apart. */
+export function evaluateForm(s: Session, form: LocalForm, evaluate: Evaluate, twoSided = false): Multi {
   const c = s.context;
-  c.notes.sided = true;
+  if (!twoSided) c.notes.sided = true;
   for (const assumption of form.assumptions ?? []) c.notes.assumptions.add(assumption);
   const leaves: [string, Multi][] = [];
   for (const [name, formal] of Object.entries(form.formals)) leaves.push([name, evaluateFormal(s, formal, evaluate)]);

@@ -1,12 +1,13 @@
-/** The door's function: both sides of a point, merged where they agree. */
+/** The door's function: both sides of a point, merged where they provably agree. */
 import { build, dependsOn, type Expression, Q } from '../expression/index.ts';
 import { attempt, type Budget, Declined, type Outcome } from '../outcome.ts';
-import { addElements, isRational, multiplyElements, plainText } from '../series/index.ts';
+import { addElements, isRational, isRealMulti, multiplyElements, plainText } from '../series/index.ts';
 import { assemble } from './assemble.ts';
 import { inCompound } from './compound.ts';
 import { requireShallow } from './depth.ts';
 import type { Expansion, ExpansionProblem } from './expansion.ts';
 import type { Direction } from './open-side.ts';
+import { isEvenInRoot } from './even-root.ts';
 import { radiusOf } from './radius.ts';
 import { expandSide, type SideResult } from './side.ts';
 
@@ -33,7 +34,7 @@ function withRadius(problem: ExpansionProblem, found: Expansion, budget: Budget)
   if (found.divergent) return { ...found, radius: { value: build.number(0) } };
   const powers = [...found.terms, ...(found.remainder ? [found.remainder] : [])];
   const laurent = powers.every((t) => t.log === 0 && t.scale === null && t.power?.kind === 'number' && t.power.value.den === 1n);
-  if (!laurent || found.prefactor || found.exact || found.left) return found;
+  if (!problem.radius || !laurent || found.prefactor || found.exact || found.left) return found;
   const radius = radiusOf(problem, budget);
   return radius ? { ...found, radius } : found;
 }
@@ -68,11 +69,9 @@ function bothSides(problem: ExpansionProblem, budget: Budget): Expansion {
   refuseEssential(left);
   if (left instanceof Declined) return assemble(problem, 'right', right as SideResult, [sideAssumption(problem, '>')]);
   if (right instanceof Declined) return assemble(problem, 'left', left, [sideAssumption(problem, '<')]);
-  if (agree(right, left)) return assemble(problem, 'both', right, []);
-  const rightReal = isReal(right);
-  const leftReal = isReal(left);
-  if (rightReal && !leftReal) return assemble(problem, 'right', right, [sideAssumption(problem, '>')]);
-  if (leftReal && !rightReal) return assemble(problem, 'left', left, [sideAssumption(problem, '<')]);
+  if (agreeExactly(right, left) || isEvenInRoot(problem, budget)) return assemble(problem, 'both', right, []);
+  if (isReal(right) && isNotReal(left)) return assemble(problem, 'right', right, [sideAssumption(problem, '>')]);
+  if (isReal(left) && isNotReal(right)) return assemble(problem, 'left', left, [sideAssumption(problem, '<')]);
   return { ...assemble(problem, 'right', right, []), left: assemble(problem, 'left', left, []) };
 }
 
@@ -85,15 +84,20 @@ function refuseEssential(side: SideResult | Declined): void {
   if (exponential) throw new Declined('no-expansion', 'The point is an essential singularity and the function behaves differently on its two sides; ask for the right or the left side.');
 }
 
-function isReal(side: SideResult): boolean {
-  return side.terms.every((t) => isRational(t.coefficient) || side.context.field.isReal(t.coefficient) !== 'no');
+/** By construction. */
+const isReal = (side: SideResult): boolean => isRealMulti(side.context, side.series);
+
+/** Whether a coefficient is not real, or real for special values of its parameters only. */
+function isNotReal(side: SideResult): boolean {
+  const { field } = side.context;
+  return side.terms.some((t) => !isRational(t.coefficient) && (field.isReal(t.coefficient) === 'no' || (field.isReal(t.coefficient) === 'undecided' && field.parameters(t.coefficient).length > 0)));
 }
 
-/** Whether the left terms (in a - x) are the right ones (in x - a) read with t negative and L = log|t|. */
-function agree(right: SideResult, left: SideResult): boolean {
-  if (right.terms.length !== left.terms.length || (right.remainder === null) !== (left.remainder === null)) return false;
+/** Whether both sides are finite sums and the left one (in a - x) is the right one (in x - a) read with t negative and L = log|t|. */
+function agreeExactly(right: SideResult, left: SideResult): boolean {
+  if (right.remainder || left.remainder || right.terms.length !== left.terms.length) return false;
   const pairs = right.terms.map((t, k) => [t, left.terms[k]] as const);
-  const same = pairs.every(([r, l]) => {
+  return pairs.every(([r, l]) => {
     if (!l || r.factors.length > 0 || l.factors.length > 0 || r.oscillation || l.oscillation || r.log !== l.log) return false;
     if (!isRational(r.power) || !isRational(l.power) || !Q.equal(r.power, l.power) || r.power.den !== 1n) return false;
     const sign = r.power.num % 2n === 0n ? 1 : -1;
@@ -101,10 +105,4 @@ function agree(right: SideResult, left: SideResult): boolean {
     const other = field.fromExpression(left.context.field.toExpression(l.coefficient));
     return field.isZero(addElements(right.context, r.coefficient, multiplyElements(right.context, Q.rational(-sign), other))) === 'yes';
   });
-  if (!same) return false;
-  if (!right.remainder || !left.remainder) return true;
-  const a = right.remainder;
-  const b = left.remainder;
-  return a.factors.length === 0 && b.factors.length === 0 && a.log === b.log && isRational(a.power) && isRational(b.power) && Q.equal(a.power, b.power);
 }
-

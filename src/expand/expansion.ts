@@ -62,6 +62,8 @@ export interface ExpansionProblem {
   readonly terms?: number;
   readonly order?: Rational;
   readonly assumptions: readonly Assumption[];
+  /** Also find the radius of convergence. Default false. */
+  readonly radius?: boolean;
 }
 
 /** Expand the root of an equation (a relation with one equals sign, or an expression set to zero) in the symbol `unknown`. */

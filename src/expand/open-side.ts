@@ -1,10 +1,10 @@
 /** One side of a point made into t -> 0+: the symbol that trees are written in, and the variable as a series. */
 import { createField } from '../algebra/index.ts';
-import type { Field } from '../algebra/types.ts';
+import type { Element, Field } from '../algebra/types.ts';
 import { type Assumption, build, type Expression, Q, substitute } from '../expression/index.ts';
 import { describe } from '../functions/index.ts';
 import { type Budget, Declined } from '../outcome.ts';
-import { type Context, createScale, finiteStream, Series } from '../series/index.ts';
+import { type Context, createScale, finiteStream, isRational, type Notes, Series } from '../series/index.ts';
 import type { ExpansionProblem } from './expansion.ts';
 import { openSession, type Session } from './session.ts';
 
@@ -36,14 +36,37 @@ function chartOf(problem: Pick<ExpansionProblem, 'variable' | 'point'>, directio
     : { symbol, variable: build.difference(a, w), inverse: build.difference(a, variable), infinite };
 }
 
-export function openContext(field: Field, budget: Budget, symbol: string, local: Expression, largeLogarithm: Expression, oscillation: boolean): Context {
+/** The field, with a note where a constant arises that is not provably real: sums, products and quotients of real ones are real. */
+function watched(field: Field, notes: Notes): Field {
+  const watch = (e: Element): Element => {
+    if (!notes.complex && !isRational(e) && field.isReal(e) !== 'yes') notes.complex = true;
+    return e;
+  };
+  const watching: Field = Object.create(field, {
+    i: {
+      get: () => {
+        notes.complex = true;
+        return field.i;
+      },
+    },
+    fromExpression: { value: (e: Expression) => watch(field.fromExpression(e)) },
+    power: { value: (a: Element, exponent: Element) => watch(field.power(a, exponent)) },
+    exp: { value: (a: Element) => watch(field.exp(a)) },
+    log: { value: (a: Element) => watch(field.log(a)) },
+    call: { value: (id: string, args: readonly Element[]) => watch(field.call(id, args)) },
+  }) as Field;
+  return watching;
+}
+
+export function openContext(plainField: Field, budget: Budget, symbol: string, local: Expression, largeLogarithm: Expression, oscillation: boolean): Context {
+  const notes: Notes = { sided: false, onReal: false, divergent: false, complex: false, assumptions: new Set() };
   return {
-    field,
+    field: watched(plainField, notes),
     budget,
     scale: createScale(local, largeLogarithm),
     local: symbol,
     oscillation,
-    notes: { sided: false, divergent: false, assumptions: new Set() },
+    notes,
     patience: { value: 16 },
   };
 }

@@ -193,11 +193,13 @@ function preimages(s: Search, a: Expression, values: Family): Family[] | null {
   return [{ base: field.divide(field.subtract(values.base, constant), slope), step: values.step && field.divide(values.step, slope) }];
 }
 
-/** The point nearest to the center other than itself; 'none' if there is none, null where the nearest may lie further along a family. */
+/** The point nearest to the center other than itself; 'none' if there is none. */
 function nearest(c: Context, center: Element, families: readonly Family[]): { at: Element; distance: Element } | 'none' | null {
   let best: { at: Element; square: Element } | null = null;
   for (const f of families) {
-    for (let k = f.step ? -12 : 0; k <= (f.step ? 12 : 0); k += 1) {
+    const indices = f.step ? around(nearestIndex(c, center, f.base, f.step)) : [0n];
+    if (!indices) return null;
+    for (const k of indices) {
       const at = f.step ? c.field.add(f.base, c.field.multiply(f.step, Q.rational(k))) : f.base;
       const d = c.field.subtract(at, center);
       const re = realPart(c, d);
@@ -206,11 +208,42 @@ function nearest(c: Context, center: Element, families: readonly Family[]): { at
       // The center itself may be a pole: the radius is then that of the punctured disc.
       if (isZero(c, square)) continue;
       if (!best || compareExponents(c, square, best.square) < 0) best = { at, square };
-      else if (f.step && k === 12 && best && compareExponents(c, square, best.square) === 0) return null;
     }
   }
   if (!best) return 'none';
   return { at: best.at, distance: c.field.power(best.square, Q.HALF) };
+}
+
+/** The squared distance is convex in the index: its least value, and the least one other than zero, lie at these. */
+const around = (k: bigint | null): bigint[] | null => (k === null ? null : [k - 1n, k, k + 1n]);
+
+/** The least k with |base + (k+1) step - center| >= |base + k step - center|, that is |step|^2 (2k + 1) + 2 Re((base - center) conj(step)) >= 0; null beyond 2^64. */
+function nearestIndex(c: Context, center: Element, base: Element, step: Element): bigint | null {
+  const { field } = c;
+  const parts = (e: Element): [Element, Element] => [realPart(c, e), imaginaryPart(c, e)];
+  const [u, v] = parts(step);
+  const [a, b] = parts(field.subtract(base, center));
+  const size = field.add(field.multiply(u, u), field.multiply(v, v));
+  const slope = field.multiply(Q.rational(2), field.add(field.multiply(a, u), field.multiply(b, v)));
+  const rises = (k: bigint): boolean => compareExponents(c, field.add(field.multiply(size, Q.rational(2n * k + 1n)), slope), Q.ZERO) >= 0;
+  let low = -1n;
+  let high = 0n;
+  for (let reach = 1n; !rises(high); reach *= 2n) {
+    if (reach > 1n << 64n) return null;
+    low = high;
+    high += reach;
+  }
+  for (let reach = 1n; rises(low); reach *= 2n) {
+    if (reach > 1n << 64n) return null;
+    high = low;
+    low -= reach;
+  }
+  while (high - low > 1n) {
+    const middle = (low + high) >> 1n;
+    if (rises(middle)) high = middle;
+    else low = middle;
+  }
+  return high;
 }
 
 /** Whether the function's expansion at the place shows a pole, a branch point or a logarithm. */

@@ -1,7 +1,7 @@
 /** One side of a point: the function as a multiseries in t -> 0+, and its first terms. */
 import { type Expression, Q, type Rational } from '../expression/index.ts';
 import { type Budget, Declined } from '../outcome.ts';
-import { addElements, compareExponents, type Context, type Multi } from '../series/index.ts';
+import { addElements, compareExponents, type Context, type Multi, negateElement } from '../series/index.ts';
 import { evaluate } from './evaluate.ts';
 import type { ExpansionProblem } from './expansion.ts';
 import { type RawTerm, rawTerms } from './flatten.ts';
@@ -47,7 +47,7 @@ function shownSize(c: Context, term: RawTerm, last: RawTerm | undefined): RawTer
   return { ...last, power: addElements(c, last.power, Q.ONE), log: 0, oscillation: null, order: true };
 }
 
-/** Whether the term is not above t^order times the leading prefactor. */
+/** Whether the term is not above t^order; where a prefactor is taken out, powers count inside it. */
 function isBelow(c: Context, term: RawTerm, lead: RawTerm, order: Rational): boolean {
   for (const f of term.factors) {
     if (f.element.rank <= c.scale.local.rank) continue;
@@ -58,5 +58,6 @@ function isBelow(c: Context, term: RawTerm, lead: RawTerm, order: Rational): boo
   for (const g of lead.factors) {
     if (g.element.rank > c.scale.local.rank && !term.factors.some((f) => f.element === g.element)) return compareExponents(c, Q.ZERO, g.exponent) > 0;
   }
-  return compareExponents(c, term.power, order) >= 0;
+  const inside = lead.factors.length > 0 && !lead.oscillation ? addElements(c, term.power, negateElement(c, lead.power)) : term.power;
+  return compareExponents(c, inside, order) >= 0;
 }

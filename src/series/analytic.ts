@@ -1,7 +1,7 @@
 /** Trigonometric, hyperbolic and inverse functions of multiseries at regular points, through addition theorems and derivatives. */
 import type { Element } from '../algebra/types.ts';
 import { build, Q } from '../expression/index.ts';
-import { exponential, levels, reciprocal, requireOscillation, withExact } from './exponential.ts';
+import { exponential, isRealMulti, levels, reciprocal, requireOscillation, withExact } from './exponential.ts';
 import { leading } from './leading.ts';
 import { type Context, exactOf, type Multi, type ScaleElement, Series, Stream, unnamed } from './multi.ts';
 import { add, multiply, ringOf, scaleBy, streamIn, subtract } from './ring.ts';
@@ -18,6 +18,7 @@ export interface SineCosine {
 export function sineCosine(c: Context, f: Multi): SineCosine {
   const { large, constant, small } = split(c, f);
   let phase: Element = constant;
+  if (large && !isRealMulti(c, large)) return ofComplex(c, f);
   if (large) {
     requireOscillation(c);
     phase = c.field.add(c.field.fromExpression(exactOf(c, large)), constant);
@@ -25,6 +26,14 @@ export function sineCosine(c: Context, f: Multi): SineCosine {
   const at: SineCosine = { sine: c.field.call('sin', [phase]), cosine: c.field.call('cos', [phase]) };
   if (!small) return at;
   return named(c, f, addAngles(c, at, sineCosineOfSmall(c, small, -1), -1), 'sin', 'cos');
+}
+
+/** By exponentials: only a real phase oscillates, the imaginary part grows. */
+function ofComplex(c: Context, f: Multi): SineCosine {
+  const up = exponential(c, scaleBy(c, f, c.field.i));
+  const down = exponential(c, scaleBy(c, f, c.field.negate(c.field.i)));
+  const half = scaleBy(c, subtract(c, up, down), c.field.divide(Q.HALF, c.field.i));
+  return named(c, f, { sine: half, cosine: scaleBy(c, add(c, up, down), Q.HALF) }, 'sin', 'cos');
 }
 
 /** sinh f and cosh f. */

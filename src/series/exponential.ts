@@ -5,7 +5,7 @@ import { Declined } from '../outcome.ts';
 import { imaginaryPart, mapConstants } from './complex.ts';
 import { signOfExponent } from './exponent.ts';
 import { decideSign, isZero, leading, monomialOf } from './leading.ts';
-import { addElements, type Context, exactOf, isRational, type Lead, type Multi, multiplyElements, negateElement, Series, type Stream, unnamed } from './multi.ts';
+import { addElements, type Context, exactOf, isRational, type Lead, type Multi, multiplyElements, negateElement, type ScaleElement, Series, type Stream, unnamed } from './multi.ts';
 import { isOscillating, keepsFromZero } from './oscillation.ts';
 import { plainText } from './plain.ts';
 import { add, monomial, multiply, negate, scaleBy, shift, subtract } from './ring.ts';
@@ -109,7 +109,7 @@ export function power(c: Context, f: Multi, exponent: Element): Multi {
   relyOnNonZero(c, lead.coefficient);
   const rest = relativeRest(c, f, lead);
   const exponentOfElement = multiplyElements(c, lead.exponent, exponent);
-  if (n === null && signOfExponent(c, lead.exponent) !== 0) c.notes.sided = true;
+  if (n === null && signOfExponent(c, lead.exponent) !== 0) noteSides(c, isEvenLead(lead, f.element) && isPositive(c, lead.coefficient) && isEvenLead({ ...lead, exponent: exponentOfElement }, f.element));
   let front = power(c, lead.coefficient, exponent);
   if (n === null) {
     const turns = turnsAcrossCut(c, lead.coefficient, rest);
@@ -153,16 +153,41 @@ function signOfImaginary(c: Context, stream: Stream, most: number): -1 | 0 | 1 {
   return 0;
 }
 
-/** Whether the first terms are real on every level. */
-export function isRealMulti(c: Context, f: Multi, most = 12): boolean {
+/** Whether f is real for small t by construction: made of real constants by real operations, or a finite sum of real terms. */
+export function isRealMulti(c: Context, f: Multi): boolean {
+  return !c.notes.complex || isRealSum(c, f, 12);
+}
+
+function isRealSum(c: Context, f: Multi, most: number): boolean {
   if (!(f instanceof Series)) return isRational(f) || c.field.isReal(f) === 'yes';
   for (let k = 0; k < most; k += 1) {
     const term = f.stream.at(k);
     if (!term) return true;
-    if (!isRealMulti(c, term.coefficient, most)) return false;
+    if (!isRealSum(c, term.coefficient, most)) return false;
   }
-  return true;
+  return isRealTree(c, f);
 }
+
+function isRealTree(c: Context, f: Series): boolean {
+  try {
+    return c.field.isReal(c.field.fromExpression(f.exact())) === 'yes';
+  } catch (error) {
+    if (error instanceof Declined && error.failure.code !== 'over-budget') return false;
+    throw error;
+  }
+}
+
+/** Whether coefficient * element^exponent has the same sign and size at t and -t: an even power of t with a constant. */
+export const isEvenLead = (lead: Pick<Lead, 'exponent' | 'coefficient'>, element: ScaleElement): boolean =>
+  element.kind === 'local' && !(lead.coefficient instanceof Series) && isRational(lead.exponent) && lead.exponent.den === 1n && lead.exponent.num % 2n === 0n;
+
+/** A step that needs the sign of t, or at least that t is real. */
+export function noteSides(c: Context, even: boolean): void {
+  c.notes.onReal = true;
+  if (!even) c.notes.sided = true;
+}
+
+const isPositive = (c: Context, m: Multi): boolean => !(m instanceof Series) && (isRational(m) ? m.num > 0n : c.field.sign(m) === 1);
 
 /** Principal logarithm. */
 export function logarithm(c: Context, f: Multi): Multi {
@@ -177,7 +202,7 @@ export function logarithm(c: Context, f: Multi): Multi {
   let total = logarithm(c, lead.coefficient);
   if (turnsAcrossCut(c, lead.coefficient, rest) !== 0) total = subtract(c, total, multiplyElements(c, Q.rational(2), multiplyElements(c, c.field.i, pi(c))));
   if (signOfExponent(c, lead.exponent) !== 0) {
-    c.notes.sided = true;
+    noteSides(c, isEvenLead(lead, f.element) && isPositive(c, lead.coefficient));
     total = add(c, scaleBy(c, logarithmOf(c, f.element), lead.exponent), total);
   }
   if (rest.at(0) !== null) total = add(c, total, new Series(f.element, logTail(c, rest), unnamed));
@@ -230,6 +255,7 @@ function exponentialOfLarge(c: Context, large: Multi): Multi {
   if ('element' in found) {
     const factor = isRational(lead.constant) && isRational(found.logarithm.constant) ? Q.divide(lead.constant, found.logarithm.constant) : c.field.divide(lead.constant, found.logarithm.constant);
     const rest = subtract(c, large, scaleBy(c, found.element.logarithm as Multi, factor));
+    noteSides(c, isEvenLead({ exponent: factor, coefficient: Q.ONE }, found.element));
     return multiply(c, monomial(c, found.element, factor), exponential(c, rest));
   }
   const element = insertExponential(c, sign === 1 ? large : negate(c, large), found.position);

@@ -2,7 +2,7 @@
 export { alongDerivative, compose, hyperbolic, sineCosine, sumOfSeries } from './analytic.ts';
 export { theta } from './derivation.ts';
 export { compareExponents, signOfExponent, undecidedSign } from './exponent.ts';
-export { divide, exponential, generalPower, isRealMulti, levels, logarithm, pi, power, reciprocal, requireOscillation, withExact } from './exponential.ts';
+export { divide, exponential, generalPower, isEvenLead, isRealMulti, levels, logarithm, noteSides, pi, power, reciprocal, requireOscillation, withExact } from './exponential.ts';
 export { integrate } from './integration.ts';
 export { type InverseFunction, inverse } from './inverse.ts';
 export { compareMonomials, decideSign, eventualSign, type Growth, growth, isKnownZero, isZero, leading, type Monomial, monomialOf, nextTerm, nextTermOrOrder } from './leading.ts';

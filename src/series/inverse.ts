@@ -3,8 +3,8 @@ import type { Element } from '../algebra/types.ts';
 import { build, Q } from '../expression/index.ts';
 import { Declined } from '../outcome.ts';
 import { alongDerivative } from './analytic.ts';
-import { isRealMulti, logarithm, pi, power, reciprocal, withExact } from './exponential.ts';
-import { decideSign, eventualSign, isZero } from './leading.ts';
+import { isEvenLead, isRealMulti, logarithm, noteSides, pi, power, reciprocal, withExact } from './exponential.ts';
+import { decideSign, eventualSign, isZero, leading } from './leading.ts';
 import { type Context, exactOf, isRational, type Multi, multiplyElements, Series } from './multi.ts';
 import { add, multiply, negate, scaleBy, subtract } from './ring.ts';
 import { split } from './split.ts';
@@ -59,8 +59,8 @@ function atan(c: Context, f: Series): Multi {
   if (large) {
     const sign = eventualSign(c, large);
     if (sign === 'complex' || sign === 0) throw new Declined('no-expansion', 'The inverse tangent of a complex quantity that grows without bound is not expanded; split it into real and imaginary parts.');
-    if (sign !== 1) c.notes.sided = true;
-    c.notes.sided = true;
+    const lead = leading(c, f);
+    noteSides(c, lead !== null && isEvenLead(lead, f.element));
     return subtract(c, scaleBy(c, halfPi(c), Q.rational(sign)), inverse(c, 'atan', reciprocal(c, f)));
   }
   if (isReal(c, constant)) return alongDerivative(c, f, (at) => c.field.call('atan', [at]), (g) => reciprocal(c, plus(c, multiply(c, g, g), Q.ONE)));

@@ -107,7 +107,11 @@ export interface Context {
 export interface Notes {
   /** A step depended on t being positive: the other side needs its own computation. */
   sided: boolean;
+  /** A step depended on t being real, of either sign. */
+  onReal: boolean;
   divergent: boolean;
+  /** A constant arose that is not provably real. While false, every series of the context is real by construction. */
+  complex: boolean;
   readonly assumptions: Set<string>;
 }
 

@@ -46,18 +46,20 @@ describe('radius of convergence', () => {
   test.each([
     ['\\ln(1+x)', '0', '1'],
     ['\\tan x', '0', 'pi/2'],
+    ['\\tan x', '100', '100 - 63*pi/2'], // the nearest of infinitely many poles (2k + 1) pi/2
     ['\\frac{1}{1+x^2}', '1', 'sqrt(2)'],
     ['\\frac{x}{e^x-1}', '0', '2*pi'], // the pole at 0 is removable
     ['\\cot x', '0', 'pi'],
     ['\\frac{\\sin x}{x(1-x)}', '0', '1'],
     ['\\sqrt{1-x+x^2}', '0', '1'],
   ] as const)('%s at %s', (text, at, radius) => {
-    const found = expansionOf(text, { at });
+    expect(expansionOf(text, { at }).radius).toBeUndefined();
+    const found = expansionOf(text, { at, radius: true });
     expect(found.radius).toBeDefined();
     expect(same(found.radius?.value ?? build.number(0), plain(radius))).toBe(true);
   });
   test('infinite for an entire function, zero for a divergent series', () => {
-    expect(expansionOf('e^{\\sin x}').radius).toEqual({ value: null });
+    expect(expansionOf('e^{\\sin x}', { radius: true }).radius).toEqual({ value: null });
     expect(expansionOf('\\psi(x)', { at: 'inf' }).divergent).toBe(true);
     expect(expansionOf('\\int_0^\\infty\\frac{e^{-t}}{1+xt}\\,dt', { side: 'right' }).radius?.value).toBeUndefined();
   });

@@ -113,7 +113,7 @@ function divisors(n: bigint): bigint[] {
   return found;
 }
 
-/** a + b z^g, or a quadratic in z^g. */
+/** a + b z^g, a quadratic in z^g, or a cubic whose radicals are real. */
 function radicalZeros(c: Context, p: readonly Element[]): Zero[] {
   const present = p.flatMap((a, k) => (isZero(c, a) ? [] : [k]));
   const step = present.reduce((g, k) => Number(Q.gcd(BigInt(g), BigInt(k))), 0);
@@ -128,7 +128,9 @@ function radicalZeros(c: Context, p: readonly Element[]): Zero[] {
     const root = f.power(discriminant, Q.HALF);
     return [...rootsOf(c, f.subtract(half, root), step, 1), ...rootsOf(c, f.add(half, root), step, 1)];
   }
-  throw new Declined('no-expansion', 'The leading coefficients of the roots solve an equation of degree three or more that has no rational root; name the value of the root.');
+  const radicals = reduced.every(isRational) ? f.zeros(reduced as Rational[]) : null;
+  if (radicals) return radicals.flatMap((z) => rootsOf(c, z.value, step, 1));
+  throw new Declined('no-expansion', 'The leading coefficients of the roots solve an equation of degree three or more that has no rational root and is not solved by real radicals; name the value of the root.');
 }
 
 /** All n-th roots of a value other than zero: the real ones first, the others by powers of exp(2 pi i/n). */

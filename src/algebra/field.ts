@@ -5,6 +5,7 @@ import type { Budget } from '../outcome.ts';
 import { createAssumptionStore } from './assumptions.ts';
 import { signOfCall } from './callSigns.ts';
 import { imaginaryKernel, kernelElement, minus, rationalOf, type Context } from './context.ts';
+import { zerosOfCubic } from './cubic.ts';
 import { deepZero } from './deepZero.ts';
 import { callFunction } from './functions.ts';
 import { fromExpression } from './fromExpression.ts';
@@ -119,6 +120,10 @@ export function createField(assumptions: readonly Assumption[], budget: Budget, 
     exp: (a) => exponential(ctx, a),
     log: (a) => logarithm(ctx, a),
     call: (id, args) => callFunction(ctx, id, args),
+    zeros(coefficients) {
+      const [c0, c1, c2, c3] = coefficients;
+      return coefficients.length === 4 && c0 && c1 && c2 && c3 ? zerosOfCubic(ctx, [c0, c1, c2, c3]) : null;
+    },
     isZero: (a) => zero.isZero(a),
     sign(a): Sign {
       const s = signSetOf(a);

@@ -49,6 +49,11 @@ export interface Field {
   log(a: Element): Element;
   /** f(args) for any function of the registry: special values and identities where known, else a kernel. */
   call(id: string, args: readonly Element[]): Element;
+  /**
+   * All zeros of a polynomial with rational coefficients (lowest first) and no rational zero, real ones first, where real radicals write them: cubics with one real zero.
+   * Null where that is not so.
+   */
+  zeros(coefficients: readonly Rational[]): readonly { readonly value: Element; readonly real: boolean }[] | null;
   isZero(a: Element): Truth;
   /** Sign under the assumptions; 'complex' if provably not real. */
   sign(a: Element): Sign;

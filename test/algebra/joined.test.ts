@@ -107,3 +107,33 @@ describe('constants of special functions are told apart from numbers', () => {
     expect(f.isZero(f.subtract(f.fromExpression(e), Q.rational(p, q)))).toBe('no');
   });
 });
+
+describe('zeros of cubics', () => {
+  it('solve the polynomial exactly, and the real one is real', () => {
+    // x^3 - x - 1 (plastic ratio 1.324717957..., OEIS A060006, from memory), x^3 - 2x - 5 (Wallis: 2.0945514815...), and two of no name.
+    for (const coefficients of [[-1, -1, 0, 1], [-5, -2, 0, 1], [3, 1, 2, 5], [-1, 0, 1, 1]]) {
+      const f = fieldOf();
+      const zeros = f.zeros(coefficients.map((c) => Q.rational(c)));
+      expect(zeros?.map((z) => z.real)).toEqual([true, false, false]);
+      for (const zero of zeros ?? []) {
+        const value = coefficients.reduceRight<Element>((sum, c) => f.add(f.multiply(sum, zero.value), Q.rational(c)), Q.ZERO);
+        expect(f.isZero(value)).toBe('yes');
+        expect(f.isReal(zero.value)).toBe(zero.real ? 'yes' : 'no');
+        expect(f.equal(f.fromExpression(f.toExpression(zero.value)), zero.value)).toBe('yes');
+      }
+    }
+  });
+  it('lie where they are known to lie', () => {
+    for (const [coefficients, value] of [[[-1, -1, 0, 1], Q.rational(132471795, 100000000)], [[-5, -2, 0, 1], Q.rational(209455148, 100000000)]] as const) {
+      const f = fieldOf();
+      const real = f.zeros(coefficients.map((c) => Q.rational(c)))?.[0]?.value;
+      if (!real) throw new Error('no zero');
+      expect(f.compare(real, value)).toBe(1);
+      expect(f.compare(real, Q.add(value, Q.rational(1, 100000000)))).toBe(-1);
+    }
+  });
+  it('are not written where three are real', () => {
+    // x^3 - 3x + 1: casus irreducibilis.
+    expect(fieldOf().zeros([1, -3, 0, 1].map((c) => Q.rational(c)))).toBeNull();
+  });
+});

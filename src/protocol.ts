@@ -275,6 +275,8 @@ export interface FitAnswer {
   readonly imports?: readonly string[];
   /** The polynomial is in x - centre, a float; absent for 0. */
   readonly centre?: string;
+  /** Of a rational form; `coefficients` are those of its numerator. */
+  readonly denominator?: readonly CoefficientAnswer[];
   /** Where the interval was split: the polynomials in ascending order. `coefficients` and `centre` above are then those of the first one, `degree` and `bound` the largest. */
   readonly pieces?: readonly FitPieceAnswer[];
   readonly operations?: { readonly multiplications: number; readonly additions: number; readonly fused: number };

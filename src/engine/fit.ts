@@ -129,6 +129,7 @@ function answerOf(found: Fit, problem: FitProblem, request: FitRequest, time: Bu
     assumptions: found.assumptions,
     operations: countOperations(found.program),
     ...centreOf(found.centre, found.format),
+    ...(found.denominator ? { denominator: coefficients(found.denominator, found.format) } : {}),
     ...(found.pieces ? { pieces: found.pieces.map((piece): FitPieceAnswer => ({ from: endText(piece.low, problem.low, problem, 0), to: endText(piece.high, problem.high, problem, 1), coefficients: coefficients(piece.terms, found.format), degree: piece.degree, bound: up(piece.error.total), ...centreOf(piece.centre, found.format) })) } : {}),
   };
 }

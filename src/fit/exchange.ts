@@ -64,8 +64,8 @@ function interpolation(grid: Grid, powers: readonly number[]): Fixed[] | null {
   return solveFixed(matrix, bits);
 }
 
-/** Gaussian elimination with row pivoting in fixed point. */
-function solveFixed(matrix: Fixed[][], bits: number): Fixed[] | null {
+/** Gaussian elimination with row pivoting in fixed point, the right side as last column; null where a pivot vanishes. */
+export function solveFixed(matrix: Fixed[][], bits: number): Fixed[] | null {
   const n = matrix.length;
   const shift = BigInt(bits);
   const entry = (r: number, c: number): Fixed => matrix[r]?.[c] ?? 0n;
@@ -193,7 +193,7 @@ function levelInDoubles(grid: Grid, basis: Basis, { values }: Residual, budget: 
 }
 
 /** Extremal points with alternating signs, `count` of them, the largest kept; null where there are fewer. */
-function alternation(errors: Float64Array, count: number): number[] | null {
+export function alternation(errors: Float64Array, count: number): number[] | null {
   const runs: number[] = [];
   for (let i = 0; i < errors.length; i += 1) {
     const e = errors[i] ?? 0;

@@ -7,6 +7,7 @@ import { type FitCodeText, fitCode, functionName, fusing, machineArithmetic, row
 import { fixedCode, requireIntegers } from './fixedCode.ts';
 import { fitFixedPoint } from './fixedFit.ts';
 import type { FixedFormat, FloatFormat, NumberFormat } from './format.ts';
+import { fitRational } from './rationalFit.ts';
 import { splitFit } from './pieces.ts';
 import { type PolynomialFit, fitPolynomial, type PolynomialProblem } from './polynomialFit.ts';
 import type { Program } from './program.ts';
@@ -38,6 +39,8 @@ export interface FitProblem {
 
 export interface Fit {
   readonly terms: readonly PolynomialTerm[];
+  /** Of a rational form; its numerator is `terms`. */
+  readonly denominator?: readonly PolynomialTerm[];
   readonly format: NumberFormat;
   readonly degree: number;
   /** The polynomial is in x - centre. */
@@ -69,17 +72,18 @@ function fitted(problem: FitProblem, budget: Budget): Fit {
   const { format, language, contraction, method } = problem;
   const row = rowFor(language);
   if (format.kind === 'fixed') return fixedPoint(problem, format, budget);
-  if (method === 'rational') throw new Declined('bad-request', 'Rational forms are not fitted in this version; choose the method minimax.');
   if (!row.floats[format.name]) throw new Declined('bad-request', `${row.title} has no ${format.name} type; choose another format or language.`);
   const fused = contraction === 'fma' ? fusing(language, format) : 'never';
   if (contraction === 'fma' && fused === 'never') throw new Declined('bad-request', `${row.title} has no fused multiply-add; ask for the contraction any or none.`);
-  const whole: PolynomialProblem = { ...problem, format, ...withOperations(language, format), fma: fused === 'exactly', writtenFma: contraction === 'fma', method };
+  const shared = { ...problem, format, ...withOperations(language, format), fma: fused === 'exactly', writtenFma: contraction === 'fma' };
+  if (method === 'rational') return rational(problem, { ...shared, method: 'minimax' }, format, budget);
+  const whole: PolynomialProblem = { ...shared, method };
   const parts = problem.pieces === 1 ? [{ low: problem.low, high: problem.high, found: fitPolynomial(whole, budget) }] : splitFit(whole, problem.pieces, budget);
   const [first] = parts;
   if (!first) throw new RangeError('no part was fitted');
   const error = parts.map((p) => p.found.error).reduce(worse);
   const assumptions = assumptionsOf(problem, format);
-  const variable = /^[A-Za-z][A-Za-z0-9]*$/.test(problem.variable) && !row.reserved.includes(problem.variable) ? problem.variable : 'x';
+  const variable = parameterName(problem);
   const programOf = ({ writtenProgram }: PolynomialFit): Program => (variable === problem.variable ? writtenProgram : renamed(writtenProgram, problem.variable, variable));
   const comment = commentOf(problem, format, error, assumptions);
   const code = fitCode({
@@ -94,6 +98,21 @@ function fitted(problem: FitProblem, budget: Budget): Fit {
   const degree = Math.max(...parts.map((p) => p.found.degree));
   const pieces = parts.length === 1 ? {} : { pieces: parts.map(({ low, high, found }) => ({ low, high, terms: found.terms, degree: found.degree, centre: found.centre, error: found.error })) };
   return { terms: first.found.terms, format, degree, centre: first.found.centre, program: first.found.writtenProgram, error, ...pieces, method: methodText(problem), code, assumptions };
+}
+
+/** The variable where it is an identifier of the language, else x. */
+const parameterName = ({ variable, language }: FitProblem): string => (/^[A-Za-z][A-Za-z0-9]*$/.test(variable) && !rowFor(language).reserved.includes(variable) ? variable : 'x');
+
+function rational(problem: FitProblem, shared: PolynomialProblem, format: FloatFormat, budget: Budget): Fit {
+  if (problem.pieces !== 1) throw new Declined('bad-request', 'Rational functions are fitted on one interval; ask for each piece by itself.');
+  const { language } = problem;
+  const found = fitRational(shared, budget);
+  const assumptions = assumptionsOf(problem, format);
+  const variable = parameterName(problem);
+  const program = variable === problem.variable ? found.writtenProgram : renamed(found.writtenProgram, problem.variable, variable);
+  const comment = commentOf(problem, format, found.error, assumptions);
+  const code = fitCode({ branches: [{ below: problem.high, program }], variable, language, format, name: functionName(wordsFor(problem.function), language), comment, expression: problem.result === 'expression' });
+  return { terms: found.numerator, denominator: found.denominator, format, degree: found.degree, centre: found.centre, program: found.writtenProgram, error: found.error, method: methodText(problem), code, assumptions };
 }
 
 function fixedPoint(problem: FitProblem, format: FixedFormat, budget: Budget): Fit {

@@ -8,7 +8,7 @@ import { fromFixed } from './fixed.ts';
 import { binaryExponent, type FloatFormat, powerOfTwo, roundTo } from './format.ts';
 import { shiftedResidual } from './grid.ts';
 import { type Arithmetic, canStandApart, polynomialProgram, type Program } from './program.ts';
-import { certified, type CertifiedPolynomial, errorParts, type EvaluationProof, type FitMeasure, type ProofProblem, type ProvedError, proveProgram } from './proof.ts';
+import { certifiedTerms, type CertifiedPolynomial, errorParts, type EvaluationProof, type FitMeasure, type ProofProblem, type ProvedError, proveProgram } from './proof.ts';
 import { type Basis, basisFor, bestOfDegree, type Found, leastDegree, leastWithin, nextDegree, type Search } from './search.ts';
 import { type FitTarget, prepareTarget } from './target.ts';
 import { economizedOfDegree, taylorOfDegree, taylorWithin } from './truncated.ts';
@@ -136,6 +136,7 @@ function proofProblem(problem: PolynomialProblem, { target, basis }: Search): Pr
 
 interface Candidate {
   readonly found: Found;
+  readonly terms: readonly PolynomialTerm[];
   readonly polynomial: CertifiedPolynomial;
   readonly program: Program;
   readonly writtenProgram: Program;
@@ -153,7 +154,7 @@ function candidate(setting: Setting, found: Found, budget: Budget): Candidate {
   // Where rounding dominates, leading coefficients that multiply exactly can save most of it at a small cost in approximation.
   if (enough || problem.method === 'taylor' || (problem.measure !== 'ulp' && Q.compare(plain.proof.evaluation, plain.polynomial.whole.upper) < 0)) return plain;
   const apart = exactlyLed(setting, found, budget);
-  return apart && !apart.every((t, k) => Q.equal(t.value, plain.polynomial.terms[k]?.value ?? Q.ZERO)) ? bestProgram(setting, found, apart, plain, budget) : plain;
+  return apart && !apart.every((t, k) => Q.equal(t.value, plain.terms[k]?.value ?? Q.ZERO)) ? bestProgram(setting, found, apart, plain, budget) : plain;
 }
 
 function roundedTerms({ problem, search }: Setting, found: Found, budget: Budget): readonly PolynomialTerm[] {
@@ -190,13 +191,13 @@ function exactlyLed({ problem, search }: Setting, { problem: { grid, powers }, r
 function bestProgram({ problem, search, proof }: Setting, found: Found, terms: readonly PolynomialTerm[], known: Candidate | null, budget: Budget): Candidate {
   const { variable, form, fma } = problem;
   const { zero } = search.target;
-  const polynomial = certified(terms, proof, budget);
+  const polynomial = certifiedTerms(terms, proof, budget);
   let best = known;
   for (const leadingApart of [false, true]) {
     if (leadingApart && !canStandApart(terms)) continue;
     const program = polynomialProgram(terms, variable, zero, { form, fma, leadingApart });
     const writtenProgram = problem.writtenFma === fma ? program : polynomialProgram(terms, variable, zero, { form, fma: problem.writtenFma, leadingApart });
-    const next = { found, polynomial, program, writtenProgram, proof: proveProgram(program, polynomial, proof, budget) };
+    const next = { found, terms, polynomial, program, writtenProgram, proof: proveProgram(program, polynomial, proof, budget) };
     // One more operation is only worth a smaller error.
     if (!best || Q.compare(Q.multiply(next.proof.total, Q.rational(102, 100)), best.proof.total) < 0) best = next;
   }
@@ -204,13 +205,13 @@ function bestProgram({ problem, search, proof }: Setting, found: Found, terms: r
   return best;
 }
 
-function finished({ search, proof }: Setting, { found, polynomial, program, writtenProgram, proof: total }: Candidate, budget: Budget): PolynomialFit {
+function finished({ search, proof }: Setting, { found, terms, polynomial, program, writtenProgram, proof: total }: Candidate, budget: Budget): PolynomialFit {
   const { target, basis } = search;
   const unrounded = shiftBy(
     found.result.coefficients.map((c) => fromFixed(c, found.problem.grid.bits)),
     found.problem,
     target.order,
   );
-  const ideal = certified(unrounded, proof, budget);
-  return { target, terms: polynomial.terms, unrounded, degree: found.degree, basis, centre: target.zero, program, writtenProgram, error: errorParts(total, polynomial, ideal, proof, budget) };
+  const ideal = certifiedTerms(unrounded, proof, budget);
+  return { target, terms, unrounded, degree: found.degree, basis, centre: target.zero, program, writtenProgram, error: errorParts(total, polynomial, ideal, proof, budget) };
 }

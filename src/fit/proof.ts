@@ -45,12 +45,12 @@ const nonNegative = (q: Rational): Rational => greater(q, Q.ZERO);
 const fromBound = (x: number): Rational => Q.fromDouble(x);
 
 /** sup |f - p| or |f - p|/|f|, as the measure needs it: ulp bounds start from the relative one. */
-export function certify(terms: readonly PolynomialTerm[], problem: ProofProblem, budget: Budget, settled = 1.001, part?: { readonly low: Rational; readonly high: Rational }): DifferenceBound {
+export function certify(approximation: Expression, problem: ProofProblem, budget: Budget, settled = 1.001, part?: { readonly low: Rational; readonly high: Rational }): DifferenceBound {
   const { low, high } = part ?? { low: problem.symmetric ? Q.ZERO : problem.low, high: problem.high };
   const inside = Q.compare(low, problem.centre) <= 0 && Q.compare(problem.centre, high) <= 0;
   const result = boundDifference({
     function: problem.function,
-    approximation: polynomialOf(terms, problem.variable, problem.centre),
+    approximation,
     variable: problem.variable,
     low,
     high,
@@ -65,13 +65,15 @@ export function certify(terms: readonly PolynomialTerm[], problem: ProofProblem,
 
 /** What is known of a polynomial in one measure, whatever program evaluates it. */
 export interface CertifiedPolynomial {
-  readonly terms: readonly PolynomialTerm[];
+  /** A polynomial, or a quotient of two, in the variable. */
+  readonly approximation: Expression;
   readonly whole: DifferenceBound;
   /** Certified absolute suprema on parts, by their ends. */
   readonly parts: Map<string, Rational>;
 }
 
-export const certified = (terms: readonly PolynomialTerm[], problem: ProofProblem, budget: Budget): CertifiedPolynomial => ({ terms, whole: certify(terms, problem, budget), parts: new Map() });
+export const certified = (approximation: Expression, problem: ProofProblem, budget: Budget): CertifiedPolynomial => ({ approximation, whole: certify(approximation, problem, budget), parts: new Map() });
+export const certifiedTerms = (terms: readonly PolynomialTerm[], problem: ProofProblem, budget: Budget): CertifiedPolynomial => certified(polynomialOf(terms, problem.variable, problem.centre), problem, budget);
 
 /** Certified parts of an interval that one bound in ulp may rest on. */
 const MOST_PARTS = 12;
@@ -93,7 +95,7 @@ function inUlp(polynomial: CertifiedPolynomial, runs: readonly BinadeRun[], prob
     if (!worst || worst.done) return worst?.total ?? Q.ZERO;
     const [low, high] = [Q.fromDouble(worst.run.low), Q.fromDouble(worst.run.high)];
     const key = `${worst.run.low}:${worst.run.high}`;
-    const known = polynomial.parts.get(key) ?? certify(polynomial.terms, problem, budget, 1.01, { low: greater(low, problem.low), high: Q.compare(high, problem.high) > 0 ? problem.high : high }).upper;
+    const known = polynomial.parts.get(key) ?? certify(polynomial.approximation, problem, budget, 1.01, { low: greater(low, problem.low), high: Q.compare(high, problem.high) > 0 ? problem.high : high }).upper;
     polynomial.parts.set(key, known);
     worst.total = Q.add(Q.multiply(known, powerOfTwo(-worst.run.exponent)), worst.spent);
     worst.done = true;

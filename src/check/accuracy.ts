@@ -71,7 +71,7 @@ function intervalFrom(conditions: readonly Expression[], words: string, variable
 }
 
 /** |x| < c, |x - a| <= c, a < x < b, a <= x <= b. */
-function intervalOf(e: Expression, variable: string): Ends | null {
+export function intervalOf(e: Expression, variable: string): Ends | null {
   if (e.kind !== 'relation' || !e.relations.every((r) => r === '<' || r === '<=')) return null;
   const [first, second, third] = e.sides;
   if (!first || !second) return null;

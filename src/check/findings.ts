@@ -5,14 +5,16 @@ import { toPlain } from '../write/index.ts';
 import { judgeAccuracy, statementIn } from './accuracy.ts';
 import { type Accused, blame, isOneChangeAway } from './blame.ts';
 import { type Claim, isTranscendental } from './claims.ts';
+import { regionBeside, regionError } from './convergence.ts';
 import type { FoundFormula } from './formulas.ts';
 import { halfUnit } from './decimals.ts';
 import { explicitPart, type General, generalIn, judgeGeneral } from './generalClaims.ts';
 import { type Hint, judge, type Judgement } from './judge.ts';
 import { calibrated } from './calibrate.ts';
 import { isGridName, normalise } from './normalise.ts';
-import { notationOf } from './notation.ts';
+import { notationOf, writeIn } from './notation.ts';
 import type { Setting } from './context.ts';
+import { leading } from './size.ts';
 import { settingsFor, type Around, type Asked, type Choice } from './setting.ts';
 import { hasMarks, withoutMarks } from './truncated.ts';
 
@@ -44,6 +46,8 @@ interface Tried {
 export function findingOf(printed: Claim, given: Expression, asked: Asked, place: Place, options: FindingOptions = {}): readonly Finding[] {
   const main = mainFinding(printed, given, asked, place, options);
   if (!main) return options.lenient === undefined ? fittedFinding(printed, given, asked, place) : [];
+  const region = main.setting && main.finding.verdict === 'holds' && options.lenient === undefined ? regionFinding(printed, given, main.setting, place) : null;
+  if (region) return [main.finding, region];
   const accuracy = main.setting && options.lenient === undefined ? accuracyFinding(printed, given, main.setting, place) : null;
   // A fitted polynomial is judged by the accuracy that is claimed for it.
   if (accuracy && accuracy.verdict !== 'undecided' && main.finding.verdict === 'fails' && main.fitted) return [accuracy];
@@ -78,11 +82,11 @@ function mainFinding(printed: Claim, given: Expression, asked: Asked, place: Pla
   if (isPlainEquation(printed) && choices.some((c) => unknownSymbols(given, printed.side, c.setting).length > 0)) return null;
   const tried: Tried[] = [];
   for (const choice of choices) {
-    const { f, claim } = prepared(given, printed, choice.setting);
+    const { f, claim } = reduced(given, printed, choice.setting);
     const general = generalIn(f, claim.side, choice.setting);
     if (general) {
       const finding = generalFinding(claim, f, general, choice, place, options);
-      if (finding !== 'next') return only(finding);
+      if (finding !== 'next') return settled(finding, choice.setting, claim.side);
       continue;
     }
     const judgement = judge(f, claim.side, claim.relation, choice.setting);
@@ -97,7 +101,7 @@ function mainFinding(printed: Claim, given: Expression, asked: Asked, place: Pla
   else if (firm >= 0) tried.splice(0, tried.length, ...tried.slice(firm, firm + 1));
   const best = tried.reduce<Tried | null>((a, b) => (a === null || matchedIn(b) > matchedIn(a) ? b : a), null);
   if (!best) return null;
-  const { f, claim } = prepared(given, printed, best.choice.setting);
+  const { f, claim } = reduced(given, printed, best.choice.setting);
   if (best.judgement.kind === 'undecided') return meant(claim, f, best.choice.setting) ? only(undecided(claim, place, best.judgement.reason)) : null;
   if (best.judgement.kind !== 'fails') return null;
   if (!isHeldAgainst(claim, f, best, tried.length > 1, place)) return meant(claim, f, best.choice.setting) && hasMarks(claim.side) ? only(undecided(claim, place, 'It is not plain in which quantity, and where, this is an expansion; say so with a note such as leading-order: small x.')) : null;
@@ -140,6 +144,21 @@ function accuracyFinding(printed: Claim, given: Expression, setting: Setting, pl
       return { ...base, verdict: 'undecided', severity: 'hint', reason: verdict.reason };
   }
 }
+
+/** A region of convergence beside dots or an infinite sum that is larger than the disc. */
+function regionFinding(printed: Claim, given: Expression, setting: Setting, place: Place): Finding | null {
+  const endless = [...walk(printed.side)].some((n) => n.kind === 'dots' || (n.kind === 'indexedSum' && n.upper.kind === 'constant'));
+  if (!endless || printed.relation === 'tilde') return null;
+  const { end } = place.formula.span;
+  const region = regionBeside(place.text, place.around.conditions, end, Math.min(end + ACCURACY_REACH, place.until ?? Infinity), setting.variable);
+  const error = region && regionError(region, prepared(given, printed, setting).f, setting);
+  if (!error) return null;
+  const notation = notationOf(place.text.slice(place.formula.span.start, place.formula.span.end), place.formula.notation);
+  const right = writeIn(notation, error.radius);
+  const base = { ...error.place, claim: printed.span, verdict: 'fails' as const, severity: 'error' as const, found: right, ...labelOf(place) };
+  return { ...base, reason: `${error.reason}: the radius of convergence is ${right}.`, fix: error.bound && { ...error.bound, text: right } };
+}
+
 const ACCURACY_REACH = 160;
 /** The end of the paragraph, or of a sentence that the next one does not go on about. */
 const OTHER_SENTENCE = /\n\s*\n|[.!?][$)\s]*\s(?=[A-Z])(?!(?:The|Its|Here the|This|It)\b[^.;]{0,40}?\b(?:errors?|accura\w+|within|correct to|precision|deviat\w+)\b)/;
@@ -148,6 +167,19 @@ const OTHER_SENTENCE = /\n\s*\n|[.!?][$)\s]*\s(?=[A-Z])(?!(?:The|Its|Here the|Th
 function prepared(given: Expression, printed: Claim, setting: Setting): { readonly f: Expression; readonly claim: Claim } {
   const { f, side } = normalise(given, printed.side, setting.variable);
   return { f, claim: { ...printed, side: calibrated(f, side, setting) } };
+}
+
+/** As prepared; and `f = P (1 + ...)` with a P that is no power, as in Stirling's series, is judged as `f/P = 1 + ...`. */
+function reduced(given: Expression, printed: Claim, setting: Setting): { readonly f: Expression; readonly claim: Claim } {
+  const whole = prepared(given, printed, setting);
+  const { side } = whole.claim;
+  if (side.kind !== 'product') return whole;
+  const sums = side.factors.filter((factor) => factor.kind === 'sum' && dependsOn(withoutMarks(factor), setting.variable));
+  const [sum] = sums;
+  if (!sum || sums.length !== 1) return whole;
+  const front = build.product(...side.factors.filter((factor) => factor !== sum));
+  if (!dependsOn(front, setting.variable) || hasMarks(front) || leading(setting, front).kind !== 'other') return whole;
+  return { f: build.quotient(whole.f, front), claim: { ...whole.claim, side: sum } };
 }
 
 /** A claim with a general term: its explicit part first, then its first terms, then a proof. `next`: try the next setting. */
@@ -235,7 +267,7 @@ const mentionsFunction = (e: Expression): boolean => [...walk(e)].some((n) => n.
 
 function isNearlyTrue(given: Expression, printed: Claim, tried: Tried, place: Place): boolean {
   if (tried.judgement.kind !== 'fails') return false;
-  const { f, claim } = prepared(given, printed, tried.choice.setting);
+  const { f, claim } = reduced(given, printed, tried.choice.setting);
   return isOneChangeAway(accusedOf(claim, f, tried.choice.setting, tried.judgement, place));
 }
 

@@ -169,7 +169,11 @@ class Evaluator {
     const sum = this.#sum(a, b);
     // Sums of fixed-point numbers are exact while they do not overflow.
     if (this.#format.kind === 'fixed') return withinFixed(sum, addUp(a.absolute, b.absolute), this.#format);
-    return sterbenz(a, b) ? withError(sum, 0, 0) : rounded(sum, addUp(a.absolute, b.absolute), this.#format);
+    const error = addUp(a.absolute, b.absolute);
+    // Sums of floats below twice the smallest normal number are exact: all are multiples of the smallest subnormal. A product fused into the sum is then
+    // rounded to such a multiple once, by no more than it would be by itself.
+    if (addUp(interval.size(sum.exact), up(error / SCALE)) < 2 ** (this.#format.emin + 1)) return withError(sum, error, error);
+    return sterbenz(a, b) ? withError(sum, 0, 0) : rounded(sum, error, this.#format);
   }
 
   #sum(a: Exact, b: Exact): Exact {

@@ -12,10 +12,10 @@ import { fromExpression } from './fromExpression.ts';
 import { refutedByInverse } from './inverseFunctions.ts';
 import { createKernelTable, type Kernel } from './kernel.ts';
 import { divideElements, exponential, generalPower, logarithm } from './powers.ts';
-import { polynomialKey, type Polynomial } from './polynomial.ts';
+import { isOnePolynomial, polynomialKey, type Polynomial } from './polynomial.ts';
 import { addElements, allKernels, elementFromPolynomial, elementKey, isQuotient, kernelsOf, multiplyElements, negateElement } from './quotient.ts';
-import { createSignRules, isRealSet, NEGATIVE, NIL, NOT_REAL, POSITIVE, REAL, ANY, type SignSet } from './signs.ts';
-import { byImaginaryUnit } from './split.ts';
+import { createSignRules, isNonZero, isRealSet, NEGATIVE, NIL, NOT_REAL, POSITIVE, REAL, ANY, type SignSet } from './signs.ts';
+import { byImaginaryUnit, singleKernel } from './split.ts';
 import { toExpression } from './toExpression.ts';
 import type { Element, Field, Sign, Truth } from './types.ts';
 import { createZeroTest, signOfBall } from './zero.ts';
@@ -146,6 +146,11 @@ export function createField(assumptions: readonly Assumption[], budget: Budget, 
       if (!isQuotient(a) && !isQuotient(b)) return Q.compare(a as Rational, b as Rational);
       return field.sign(field.subtract(a, b));
     },
+    factorsThatMayVanish(a) {
+      if (!isQuotient(a)) return [];
+      const factors = [...a.monomial.kernels.map((k) => kernelElement(ctx, table.kernels[k] as Kernel)), ...(isOnePolynomial(a.numerator) ? [] : [elementFromPolynomial(table, a.numerator)]), ...a.denominator.map((f) => elementFromPolynomial(table, f.polynomial))];
+      return factors.flatMap(bare).filter((u, i, all) => !isNonZero(signs.of(u)) && all.findIndex((v) => elementKey(v) === elementKey(u)) === i);
+    },
     require: (assumption) => void needed.add(assumption),
     parameters(a) {
       return [...allKernels(table, a)]
@@ -155,6 +160,17 @@ export function createField(assumptions: readonly Assumption[], budget: Budget, 
     },
     key: elementKey,
   };
+
+  /** |u| and the base of a root vanish where u does; exponentials and i never. */
+  function bare(u: Element): readonly Element[] {
+    const single = singleKernel(u);
+    // A root was replaced by what stands under it.
+    if (!single && isQuotient(u) && u.monomial.kernels.length > 0) return field.factorsThatMayVanish(u);
+    const shape = single ? (table.kernels[single.kernel] as Kernel).shape : null;
+    if (shape?.kind === 'abs') return field.factorsThatMayVanish(shape.argument);
+    if (shape?.kind === 'radicand' || shape?.kind === 'power') return field.factorsThatMayVanish(shape.base);
+    return shape?.kind === 'exp' || shape?.kind === 'imaginary' ? [] : [u];
+  }
 
   /** A sign that only zero could spoil: the parameters that must not vanish become part of the result. */
   function decided(sign: 1 | -1, s: SignSet, a: Element): Sign {

@@ -61,6 +61,8 @@ export interface Field {
   equal(a: Element, b: Element): Truth;
   /** Sign of a - b: used to order exponents. */
   compare(a: Element, b: Element): Sign;
+  /** The factors of a product or quotient that are not known to differ from 0, each without number and sign in front: `-2 m c^2/I` gives m, c, I. Of them and nothing else a condition a != 0 speaks. */
+  factorsThatMayVanish(a: Element): readonly Element[];
   /** Records that the result needs this (protocol notation, `a > 0`). */
   require(assumption: string): void;
   /** Names of free parameters. */

@@ -42,7 +42,7 @@ function relyOnNonZero(c: Context, coefficient: Multi): void {
   if (coefficient instanceof Series || isRational(coefficient) || c.field.parameters(coefficient).length === 0) return;
   const sign = c.field.sign(coefficient);
   if (sign !== 'undecided' && sign !== 'complex') return;
-  if (!isOscillating(c, coefficient)) c.field.require(`${plainText(c.field.toExpression(coefficient))} != 0`);
+  if (!isOscillating(c, coefficient)) for (const u of c.field.factorsThatMayVanish(coefficient)) c.field.require(`${plainText(c.field.toExpression(u))} != 0`);
 }
 
 /** 1/f. */

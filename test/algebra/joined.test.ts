@@ -137,3 +137,17 @@ describe('zeros of cubics', () => {
     expect(fieldOf().zeros([1, -3, 0, 1].map((c) => Q.rational(c)))).toBeNull();
   });
 });
+
+describe('conditions of being non-zero', () => {
+  // Common practice: a condition names the quantity, without numbers, signs and factors that cannot vanish.
+  it.each([
+    [b.negation(b.quotient(b.product(n(2), s('m'), b.power(s('c'), 2)), s('I'))), [], ['m', 'c', 'I']],
+    [b.product(n(2), s('omega')), [], ['omega']],
+    [b.product(pi, s('a'), b.difference(s('a'), n(1))), positive('a'), ['(a - 1)']],
+    [b.product(b.power(b.constant('e'), s('a')), sq(b.quotient(s('L'), s('g')))), [], ['g', 'L']],
+    [n(3), [], []],
+  ] as [Expression, Assumption[], string[]][])('%#', (e, assume, expected) => {
+    const f = fieldOf(assume);
+    expect(f.factorsThatMayVanish(f.fromExpression(e)).map((u) => text(f.toExpression(u))).sort()).toEqual([...expected].sort());
+  });
+});

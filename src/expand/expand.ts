@@ -8,6 +8,7 @@ import { requireShallow } from './depth.ts';
 import type { Expansion, ExpansionProblem } from './expansion.ts';
 import type { Direction } from './open-side.ts';
 import { isEvenInRoot } from './even-root.ts';
+import { generalTerm } from './general.ts';
 import { radiusOf } from './radius.ts';
 import { expandSide, type SideResult } from './side.ts';
 
@@ -25,8 +26,14 @@ export function expand(problem: ExpansionProblem, budget: Budget): Outcome<Expan
 
 function expandSymbol(problem: ExpansionProblem, budget: Budget): Expansion {
   validate(problem);
-  if (problem.point === 'inf' || problem.point === '-inf') return oneSide(problem, problem.point, budget);
-  return withRadius(problem, problem.side === 'both' ? bothSides(problem, budget) : oneSide(problem, problem.side, budget), budget);
+  if (problem.point === 'inf' || problem.point === '-inf') return withGeneral(problem, oneSide(problem, problem.point, budget), budget);
+  const found = problem.side === 'both' ? bothSides(problem, budget) : oneSide(problem, problem.side, budget);
+  return withRadius(problem, withGeneral(problem, found, budget), budget);
+}
+
+function withGeneral(problem: ExpansionProblem, found: Expansion, budget: Budget): Expansion {
+  const general = generalTerm(problem, found, budget);
+  return general ? { ...found, general } : found;
 }
 
 /** The radius of a power or Laurent series; 0 where it diverges. */

@@ -17,7 +17,7 @@ function context(): Context {
     scale: createScale(t, build.negation(build.call('log', t))),
     local: 't',
     oscillation: false,
-    notes: { sided: false, divergent: false, assumptions: new Set() },
+    notes: { sided: false, onReal: false, divergent: false, complex: false, assumptions: new Set() },
     patience: { value: 16 },
   };
 }

@@ -1,5 +1,5 @@
 /** Sums and products over an index: written out, by closed forms, or by Euler-Maclaurin with known constants. */
-import { build, type Expression, type IndexedNode, Q, substitute } from '../../expression/index.ts';
+import { build, dependsOn, type Expression, type IndexedNode, Q, substitute } from '../../expression/index.ts';
 import { Declined } from '../../outcome.ts';
 import { exponential, type Multi, multiply, sumOf } from '../../series/index.ts';
 import type { Evaluate } from '../calls.ts';
@@ -7,6 +7,7 @@ import { infinityOf } from '../integrals/integral.ts';
 import type { Session } from '../session.ts';
 import { bernoulliNumbers } from './bernoulli.ts';
 import { eulerMaclaurin } from './euler-maclaurin.ts';
+import { powerSeries } from './power-series.ts';
 import { type PowerTerm, rationalOf, type SummandTerm, summandTerms } from './summand.ts';
 
 /** Sums with at most this many terms are written out. */
@@ -29,6 +30,8 @@ export function evaluateIndexed(s: Session, e: IndexedNode, evaluate: Evaluate):
     return exponential(s.context, evaluateIndexed(s, { ...e, kind: 'indexedSum', body: build.call('log', e.body) }, evaluate));
   }
   const terms = summandTerms(e.body, k);
+  const series = !terms && infinityOf(e.upper) === 1 ? powerSeries(s, e, (tree) => [...s.bindings.keys()].some((name) => name !== k && dependsOn(tree, name)), evaluate) : null;
+  if (series !== null) return series;
   if (!terms) throw new Declined('no-expansion', 'This sum has no known closed form or constant; write it with powers, logarithms or geometric terms of its index.');
   return sumOf(s.context, terms.map((t) => (t.kind === 'geometric' ? evaluate(s, geometric(t.base, t.coefficient, e)) : powerSum(s, t, e, evaluate))));
 }

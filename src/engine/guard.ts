@@ -93,7 +93,7 @@ function intervalEnd(text: string, direction: 1 | -1): Outcome<Rational | null> 
   return success(direction < 0 ? real.lower(ball) : real.upper(ball));
 }
 
-function answerOf(found: Guarded, { format, tolerance }: GuardProblem): GuardAnswer {
+function answerOf(found: Guarded, { format, tolerance }: Pick<GuardProblem, 'format' | 'tolerance'>): GuardAnswer {
   const kept = tolerance === undefined || Q.compare(Q.fromDouble(found.bound.whole), tolerance) <= 0;
   const shown = (x: number | null): string | null => (x === null ? null : decimal(x));
   return {
@@ -108,5 +108,6 @@ function answerOf(found: Guarded, { format, tolerance }: GuardProblem): GuardAns
     assumptions: kept ? found.assumptions : [...found.assumptions, 'the tolerance is not reached in this format: the bound shown is the least that was proved'],
     interval: found.interval,
     format: format.name,
+    ...(found.derivative ? { derivative: answerOf(found.derivative, { format }) } : {}),
   };
 }

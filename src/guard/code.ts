@@ -1,5 +1,5 @@
 /** A guard as a function in a programming language: the comparison, the series, the direct form, and a comment that states what was proved. */
-import { build, type Expression, mapChildren, Q, type Rational, structureKey, walk } from '../expression/index.ts';
+import { build, dependsOn, type Expression, mapChildren, Q, type Rational, structureKey, walk } from '../expression/index.ts';
 import { type FloatFormat, wrapCode } from '../fit/index.ts';
 import { Declined } from '../outcome.ts';
 import { codeLanguage, commentLines, functionCode, type LanguageRow, type Statement } from '../write/index.ts';
@@ -50,7 +50,7 @@ export function guardCode({ name, variable, language, format, comment, direct, s
     const { form, point, closed } = series;
     const offset = Q.isZero(point) ? build.symbol(parameter) : build.sum(build.symbol(parameter), build.number(Q.negate(point)));
     const condition: Expression = { kind: 'relation', sides: [build.call('abs', offset), build.number(series.switch)], relations: [closed ? '<=' : '<'] };
-    body.push({ kind: 'if', condition, then: [...form.steps.map((s): Statement => ({ kind: 'let', name: s.name, value: rename(s.value) })), { kind: 'return', value: rename(form.result), rounded }] });
+    body.push({ kind: 'if', condition, then: [...usedSteps(form).map((s): Statement => ({ kind: 'let', name: s.name, value: rename(s.value) })), { kind: 'return', value: rename(form.result), rounded }] });
   }
   const { steps, result } = named(rename(direct), new Set([parameter, ...row.reserved]));
   body.push(...steps.map((s): Statement => ({ kind: 'let', ...s })), { kind: 'return', value: result, rounded });
@@ -60,6 +60,10 @@ export function guardCode({ name, variable, language, format, comment, direct, s
   const whole = [...commentLines(row.id, comment), ...text.split('\n').flatMap((line) => wrapCode(line, row))].join('\n');
   return { code: `${imports.length > 0 ? `${imports.join('\n')}\n\n` : ''}${whole}\n`, imports };
 }
+
+/** A series of one term may need no offset. */
+const usedSteps = ({ steps, result }: SeriesForm): SeriesForm['steps'] =>
+  steps.filter((step, k) => [result, ...steps.slice(k + 1).map((s) => s.value)].some((e) => dependsOn(e, step.name)));
 
 /** Quantities used more than once, and bases of small powers, get a name, so that each is computed once. */
 export function named(e: Expression, taken: ReadonlySet<string>): { readonly steps: readonly { readonly name: string; readonly value: Expression }[]; readonly result: Expression } {

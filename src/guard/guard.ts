@@ -5,6 +5,7 @@ import { type Budget, Declined } from '../outcome.ts';
 import { interval as doubles } from '../rigorous/index.ts';
 import { isRepresentable, powerOfTwo, roundToFormat, shortestDecimal, toPlain } from '../write/index.ts';
 import { guardCode, rowFor } from './code.ts';
+import { differentiate } from './differentiate.ts';
 import { exactForms, type ExactForm } from './forms.ts';
 import type { Piece } from './pieces.ts';
 import { type Scan, Scanner, type Side, worstBeyond } from './region.ts';
@@ -17,6 +18,8 @@ const MOST_TERMS = 24;
 const PLATEAU = 1.1;
 /** A plainer form is kept where others gain less than this. */
 const PREFERENCE = 1.4;
+/** A few ulp, in unit roundoffs: better than that is no reason for a dearer form. */
+const FEW_UNITS = 8;
 
 interface Candidate {
   readonly form: ExactForm;
@@ -54,9 +57,29 @@ export function guarded(problem: GuardProblem, budget: Budget): Guarded {
     // What was proved so far still serves when the time is up.
     if (!(error instanceof Declined && error.failure.code === 'over-budget' && candidates.length > 0)) throw error;
   }
-  const best = chosen(candidates);
+  const best = chosen(candidates, problem);
   if (!best) throw new Declined('undecided', `No form of this expression could be proved accurate on [${setting.text.join(', ')}] in ${format.name}; give a smaller "interval" that leaves out its other zeros and singular points.`);
-  return answer(best, candidates, problem, setting);
+  const found = answer(best, candidates, problem, setting);
+  return problem.derivative ? { ...found, derivative: derivativeOf(found, setting, problem, budget) } : found;
+}
+
+/** f' near the same point on the same interval, handed over at the same switch. */
+function derivativeOf(found: Guarded, setting: Setting, problem: GuardProblem, budget: Budget): Guarded | null {
+  const slope = differentiate(problem.function, problem.variable);
+  if (!slope || !dependsOn(slope, problem.variable)) return null;
+  const ends = setting.sides.map((s) => s.to && Q.add(s.point, Q.multiply(s.to, Q.rational(s.direction))));
+  const starts = setting.sides.map((s) => Q.add(s.point, Q.multiply(s.from, Q.rational(s.direction))));
+  const finite = ends.filter((e): e is Rational => e !== null);
+  const known = [...starts, ...finite].sort((a, b) => Q.compare(a, b));
+  const open = (direction: 1 | -1): boolean => setting.sides.some((s) => s.direction === direction && s.to === null);
+  const interval = { low: open(-1) ? null : (known[0] ?? null), high: open(1) ? null : (known.at(-1) ?? null) };
+  const { derivative: _, ...rest } = problem;
+  try {
+    return guarded({ ...rest, function: slope, interval, intervalText: setting.text, name: ['guarded', 'derivative'], ...(found.switch && found.switch.den < 1n << 20n ? { switch: found.switch } : {}) }, budget);
+  } catch (error) {
+    if (error instanceof Declined) return null;
+    throw error;
+  }
 }
 
 /** What the interval says of the sign of the variable. */
@@ -245,11 +268,14 @@ function candidate(form: ExactForm, sides: readonly Side[], setting: Setting, sh
   const ends = setting.sides.map((side) => side.to);
   const [end] = ends;
   const whole = end && setting.sides.every((side) => Q.isZero(side.from) && side.to && Q.equal(side.to, end)) ? roundToFormat(end, format.name) : null;
-  if (whole && end && Q.equal(whole, end)) distances.push(whole);
+  // The expression itself may be replaced by its series everywhere; a rewritten form is kept for what it is.
+  const rewritten = form.identities.length > 0;
+  if (!rewritten && whole && end && Q.equal(whole, end)) distances.push(whole);
   const beyond = (h: Rational): number | null => (whole && end && Q.compare(h, end) >= 0 ? 0 : worst(h));
+  if (problem.switch) distances.splice(0, distances.length, problem.switch);
   let plateau: Candidate | null = null;
   const found: Candidate[] = [];
-  const goal = problem.tolerance ? Q.toDouble(problem.tolerance) : null;
+  const goal = problem.tolerance ? Q.toDouble(problem.tolerance) : rewritten ? FEW_UNITS * 2 ** -format.precision : null;
   for (let n = 1; n <= shared.terms.powers.length; n += 1) {
     budget.check();
     // The truncation error grows with h, the direct one falls: the crossing is found among the ends of stretches.
@@ -274,9 +300,10 @@ function candidate(form: ExactForm, sides: readonly Side[], setting: Setting, sh
 }
 
 /** The least whole bound; a plainer candidate where it is nearly as good. */
-function chosen(candidates: readonly Candidate[]): Candidate | null {
+function chosen(candidates: readonly Candidate[], { format, tolerance }: GuardProblem): Candidate | null {
   const least = Math.min(...candidates.map((c) => c.whole));
-  const close = candidates.filter((c) => c.whole <= least * PREFERENCE);
+  const enough = Math.max(least * PREFERENCE, FEW_UNITS * 2 ** -format.precision, tolerance ? Q.toDouble(tolerance) : 0);
+  const close = candidates.filter((c) => c.whole <= enough);
   const cost = (c: Candidate): number => c.form.cost + (c.series ? 4 + 2 * c.series.terms : 0);
   return close.reduce<Candidate | null>((best, c) => (best && cost(best) <= cost(c) ? best : c), null);
 }
@@ -292,7 +319,7 @@ function answer(best: Candidate, candidates: readonly Candidate[], problem: Guar
     `where the value is below the smallest normal ${format.name} number the relative bound does not apply`,
   ];
   const written = guardCode({
-    name: ['guarded'],
+    name: problem.name ?? ['guarded'],
     variable,
     language,
     format,

@@ -4,7 +4,7 @@ import { build, type Expression, Q, type Rational } from '../expression/index.ts
 import { describe } from '../functions/index.ts';
 import type { Budget } from '../outcome.ts';
 import { encloseReal, interval, rationalOf, real } from '../rigorous/index.ts';
-import { polynomialForm, type PolynomialTerm, roundToFormat, type Step, termTree, toPlain } from '../write/index.ts';
+import { binaryExponent, polynomialForm, type PolynomialTerm, powerOfTwo, roundToFormat, type Step, termTree, toPlain } from '../write/index.ts';
 import { type ExactOrders, PieceModels } from './pieces.ts';
 import { near, type Scanner, type Side } from './region.ts';
 import type { Machine } from './roundoff.ts';
@@ -92,40 +92,63 @@ function inlined(steps: readonly Step[], result: Expression): Expression {
 
 const MODEL_LENGTH = 40;
 
-/** Truncation and rounded coefficients on 0 < d <= reach, for many numbers of terms and every smaller distance. */
+interface Reached {
+  readonly reach: Rational;
+  readonly models: PieceModels;
+  readonly quotients: Map<Expression, { readonly valuation: number; readonly sizes: readonly number[] } | null>;
+}
+
+/** Truncation and rounded coefficients at distances up to `reach`, for many numbers of terms. */
 export class Truncation {
   readonly reach: Rational;
-  readonly #models: PieceModels;
   readonly #f: Expression;
-  readonly #known = new Map<Expression, { readonly valuation: number; readonly sizes: readonly number[] } | null>();
+  readonly #make: (reach: Rational) => PieceModels;
+  readonly #reached = new Map<string, Reached>();
 
   constructor(f: Expression, variable: string, side: Side, reach: Rational, orders: ExactOrders, budget: Budget) {
     this.reach = reach;
     this.#f = f;
-    this.#models = new PieceModels(variable, near(side, reach, 0), orders, budget, { length: MODEL_LENGTH, precision: 320 });
+    this.#make = (to) => new PieceModels(variable, near(side, to, 0), orders, budget, { length: MODEL_LENGTH, precision: 320 });
   }
 
   get usable(): boolean {
-    return this.#models.of(this.#f) !== null;
+    return this.#upTo(this.reach).models.of(this.#f) !== null;
+  }
+
+  #upTo(h: Rational): Reached {
+    const reach = halfStepAbove(h, this.reach);
+    const key = Q.toText(reach);
+    let found = this.#reached.get(key);
+    if (!found) this.#reached.set(key, (found = { reach, models: this.#make(reach), quotients: new Map() }));
+    return found;
   }
 
   /** sup |f - p| / |f| over distances up to h <= reach. */
   bound(p: Expression, h: Rational): number {
-    let found = this.#known.get(p);
+    const { reach, models, quotients } = this.#upTo(h);
+    let found = quotients.get(p);
     if (found === undefined) {
-      const { m } = this.#models;
-      const [f, q] = [this.#models.of(this.#f), this.#models.of(p)];
+      const { m } = models;
+      const [f, q] = [models.of(this.#f), models.of(p)];
       const quotient = f && q && m.divide(m.subtract(f, q), f);
       found = quotient ? { valuation: quotient.valuation, sizes: [...quotient.coefficients, quotient.tail].map((c) => interval.size(interval.fromBall(c))) } : null;
-      this.#known.set(p, found);
+      quotients.set(p, found);
     }
     if (!found || found.valuation < 0) return Infinity;
-    const s = interval.up(Q.toDouble(Q.divide(h, this.reach)));
+    const s = interval.up(Q.toDouble(Q.divide(h, reach)));
     let total = 0;
     for (let k = found.sizes.length - 1; k >= 0; k -= 1) total = interval.up((found.sizes[k] ?? 0) + interval.up(total * s));
     for (let k = 0; k < found.valuation; k += 1) total = interval.up(total * s);
     return total;
   }
+}
+
+/** The least of 2^e and 3 * 2^(e - 1) that is at least h; not beyond the limit. */
+function halfStepAbove(h: Rational, limit: Rational): Rational {
+  const e = binaryExponent(h);
+  const steps = [powerOfTwo(e), Q.multiply(Q.rational(3), powerOfTwo(e - 1)), powerOfTwo(e + 1)];
+  const step = steps.find((x) => Q.compare(x, h) >= 0) ?? limit;
+  return Q.compare(step, limit) < 0 ? step : limit;
 }
 
 /** Rounding of the series for every distance up to h. */

@@ -21,6 +21,10 @@ export interface GuardProblem {
   readonly prefix?: string;
   /** Also a guard of the derivative. */
   readonly derivative?: boolean;
+  /** The switch to be used, where another guard has set it. */
+  readonly switch?: Rational;
+  /** Words of the function's name; `guarded` by default. */
+  readonly name?: readonly string[];
 }
 
 export interface GuardRange {
@@ -42,4 +46,6 @@ export interface Guarded {
   readonly imports: readonly string[];
   readonly assumptions: readonly string[];
   readonly interval: readonly [string, string];
+  /** The guard of the derivative, with the same switch where there is one; null where it has none that could be proved. */
+  readonly derivative?: Guarded | null;
 }

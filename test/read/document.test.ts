@@ -138,3 +138,15 @@ describe('documentStyle', () => {
     expect(style('$\\log x = x - \\frac{x^2}{2!} + \\frac{x^3}{3!} + \\cdots$')).toMatchObject({ logarithm: '\\log', dots: '\\cdots', factorials: true });
   });
 });
+
+/** Common practice in notes and wikis: text behind the opening sign, an equation number or running text behind the closing one. */
+describe('Markdown displays that share lines with text', () => {
+  it.each([
+    ['$$\\sin x = x\n$$ (1)\n and $y$', ['display latex: \\sin x = x', 'inline latex: y']],
+    ['$$\n\\sin x = x\n$$ (eq1)\n and $y$', ['display latex: \\sin x = x', 'inline latex: y']],
+    ['Text\n$$a\n  - b$$\nmore $z$\n\n$$\nq\n$$', ['display latex: a\n  - b', 'inline latex: z', 'display latex: q']],
+    ['costs $$5 and\n\nmore $$ x', []],
+  ] as const)('%s', (text, expected) => {
+    expect(summary(text, 'markdown')).toEqual(expected);
+  });
+});

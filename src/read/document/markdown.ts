@@ -21,8 +21,9 @@ export interface MarkdownContent {
 
 /** Regions in order, and HTML comments. Mathematics is `$...$`, `$$...$$`, math fences, and what mathematics scripts of web pages accept: `\(...\)`, `\[...\]` (also with doubled backslashes) and display environments. */
 export function markdownContent(text: string): MarkdownContent {
-  const tree = fromMarkdown(text, { extensions: [math()], mdastExtensions: [mathFromMarkdown()] }) as MarkdownNode;
-  const regions: Region[] = [];
+  const displays = looseDisplays(text);
+  const tree = fromMarkdown(blanked(text, displays), { extensions: [math()], mdastExtensions: [mathFromMarkdown()] }) as MarkdownNode;
+  const regions: Region[] = displays.flatMap(({ start, end }) => mathRegion(text, start, end, true) ?? []);
   const comments: Comment[] = [];
   /** Stretches of running text, in which delimiters with backslashes are looked for. */
   const running: { start: number; end: number }[] = [];
@@ -40,6 +41,47 @@ export function markdownContent(text: string): MarkdownContent {
   }
   for (const stretch of running) regions.push(...backslashMath(text, stretch.start, stretch.end, regions));
   return { regions: regions.sort((a, b) => a.start - b.start), comments };
+}
+
+interface Stretch {
+  readonly start: number;
+  readonly end: number;
+}
+
+/**
+ * Displays over several lines whose closing `$$` shares its line with something: `... = x$$`, `$$ (1)`. The syntax wants the closing sign alone on its line and
+ * would take everything that follows for mathematics; authors and their pages do not. Code fences are left alone.
+ */
+function looseDisplays(text: string): readonly Stretch[] {
+  const out: Stretch[] = [];
+  if (!text.includes('$$')) return out;
+  let fence: string | null = null;
+  let open: { readonly start: number; readonly bare: boolean } | null = null;
+  let at = 0;
+  for (const line of text.split('\n')) {
+    const mark = /^[ \t>]*(`{3,}|~{3,})/.exec(line)?.[1] ?? null;
+    const close = line.indexOf('$$');
+    if (open) {
+      if (close >= 0) {
+        if (line.trim() !== '$$') out.push({ start: open.start, end: at + close + 2 });
+        open = null;
+      } else if (line.trim() === '' && !open.bare) open = null;
+    } else if (mark !== null && (fence === null || mark.startsWith(fence))) fence = fence === null ? mark : null;
+    else if (fence === null && close >= 0 && /^[ \t>]*$/.test(line.slice(0, close)) && line.indexOf('$', close + 2) < 0) open = { start: at + close, bare: line.slice(close + 2).trim() === '' };
+    at += line.length + 1;
+  }
+  return out;
+}
+
+/** The stretches as plain words of the same length, line ends kept. */
+function blanked(text: string, stretches: readonly Stretch[]): string {
+  let out = '';
+  let done = 0;
+  for (const { start, end } of stretches) {
+    out += text.slice(done, start) + text.slice(start, end).replace(/[^\r\n]/g, 'x');
+    done = end;
+  }
+  return out + text.slice(done);
 }
 
 /** Null where the dollar signs are money: a space inside the delimiters, or a digit behind the closing one. */

@@ -34,6 +34,14 @@ function inspect(p: State, from: number, open: number): Bracket | null {
   for (let k = open + 1; k < close; k += 1) {
     const t = p.tokens[k] as Token;
     const skip = p.match[k] ?? -1;
+    // A bar that starts an argument opens an absolute value.
+    const last = pieces[pieces.length - 1];
+    const closing = isMark(t, '|') && last?.length === 0 ? nextBar(p, k + 2, close) : -1;
+    if (closing > k) {
+      last?.push(...p.tokens.slice(k, closing + 1));
+      k = closing;
+      continue;
+    }
     if (isMark(t, ',', ';', '|')) {
       count += 1;
       pieces.push([]);
@@ -55,6 +63,11 @@ function inspect(p: State, from: number, open: number): Bracket | null {
     last: pieces[pieces.length - 1] ?? [],
     wholeSide: (before === undefined || relationOf(before) !== null || before.kind === 'space' || isMark(before, ',', ';')) && relationOf(after) !== null,
   };
+}
+
+function nextBar(p: State, from: number, to: number): number {
+  for (let k = from; k < to; k += 1) if (isMark(p.tokens[k] as Token, '|')) return k;
+  return -1;
 }
 
 const only = (piece: readonly Token[], pattern: RegExp): boolean => piece.length === 1 && piece[0] !== undefined && (isName(piece[0]) ? pattern.test(nameText(piece[0])) : piece[0].kind === 'digit' && pattern.test(piece[0].text));
@@ -193,7 +206,8 @@ function numbersOf(p: State, from: number, base: string, index: string, primes: 
 
 /** A subscript as an expression: whole numbers, ratios, a letter, sums such as `\nu+1`, `2n`. */
 export function indexExpression(index: string): Expression {
-  const bare = index.replace(/^\{|\}$/g, '');
+  const ratios = index.replace(/\\[td]?frac\s*(?:\{\s*(\d+)\s*\}|(\d))\s*(?:\{\s*(\d+)\s*\}|(\d))/g, (_, a?: string, b?: string, c?: string, d?: string) => `${a ?? b ?? ''}/${c ?? d ?? ''}`);
+  const bare = ratios.replace(/^\{|\}$/g, '');
   const terms = bare.match(/[+-]?[^+-]+/g) ?? [bare];
   const read = (text: string): Expression => {
     const match = /^([+-]?)(\d*)(\/\d+)?((?:\\[A-Za-z]+|[A-Za-z])?(?:_.*)?)$/.exec(text);

@@ -206,7 +206,7 @@ function names(inner: readonly Token[]): number {
 
 function constantOf(p: State, t: Token, base: string): Expression | null {
   const exact = p.options.exact;
-  if (base === '\\pi') return isMark(peek(p), '(') && p.facts.bare.has('\\pi') === false ? null : build.constant('pi');
+  if (base === '\\pi') return isMark(peek(p), '(') && p.facts.bare.has('\\pi') === false && applies(p, base, '', 0) ? null : build.constant('pi');
   if (base === 'e') return t.upright || exact || p.facts.eulerNumber ? build.constant('e') : null;
   if (base === 'i' || base === 'j') {
     if (t.upright && base === 'i') return build.constant('i');

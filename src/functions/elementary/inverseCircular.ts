@@ -11,6 +11,9 @@ const square = (e: Expression): Expression => power(e, 2);
 const reciprocal = (e: Expression): Expression => quotient(number(1), e);
 const asinLatex = (name: string, long: string): readonly string[] => [`\\${long}`, `\\operatorname{${long}}`, `\\operatorname{${name}}`];
 
+/** As above for names that TeX has no command for: the form that every document can set comes first. */
+const operatorLatex = (name: string, long: string): readonly string[] => [`\\operatorname{${long}}`, `\\${long}`, `\\operatorname{${name}}`];
+
 /** Angles in units of pi by the signed square of their sine. */
 const SINES: readonly (readonly [Rational, Rational])[] = [
   [Q.ZERO, Q.ZERO],
@@ -87,7 +90,7 @@ export const inverseCircular: readonly FunctionDescription[] = [
     id: 'acot',
     title: 'inverse cotangent, arctan(1/x)',
     arity: 1,
-    names: names({ latex: [...asinLatex('acot', 'arccot'), '\\operatorname{arcctg}'], plain: ['arccot'], mpmath: 'acot', code: { julia: 'acot', matlab: 'acot' } }),
+    names: names({ latex: [...operatorLatex('acot', 'arccot'), '\\operatorname{arcctg}'], plain: ['arccot'], mpmath: 'acot', code: { julia: 'acot', matlab: 'acot' } }),
     definition: (args) => call('atan', reciprocal(one(args))),
     derivative: (args) => negation(reciprocal(sum(number(1), square(one(args))))),
     value: (args) => {
@@ -102,7 +105,7 @@ export const inverseCircular: readonly FunctionDescription[] = [
     id: 'asec',
     title: 'inverse secant',
     arity: 1,
-    names: names({ latex: asinLatex('asec', 'arcsec'), plain: ['arcsec'], mpmath: 'asec', code: { julia: 'asec', matlab: 'asec' } }),
+    names: names({ latex: operatorLatex('asec', 'arcsec'), plain: ['arcsec'], mpmath: 'asec', code: { julia: 'asec', matlab: 'asec' } }),
     definition: (args) => call('acos', reciprocal(one(args))),
     derivative: (args) => reciprocal(product(square(one(args)), squareRoot(difference(number(1), power(one(args), -2))))),
     value: (args) => {
@@ -117,7 +120,7 @@ export const inverseCircular: readonly FunctionDescription[] = [
     title: 'inverse cosecant',
     arity: 1,
     parity: 'odd',
-    names: names({ latex: [...asinLatex('acsc', 'arccsc'), '\\operatorname{arccosec}'], plain: ['arccsc'], mpmath: 'acsc', code: { julia: 'acsc', matlab: 'acsc' } }),
+    names: names({ latex: [...operatorLatex('acsc', 'arccsc'), '\\operatorname{arccosec}'], plain: ['arccsc'], mpmath: 'acsc', code: { julia: 'acsc', matlab: 'acsc' } }),
     definition: (args) => call('asin', reciprocal(one(args))),
     derivative: (args) => negation(reciprocal(product(square(one(args)), squareRoot(difference(number(1), power(one(args), -2)))))),
     value: (args) => {

@@ -24,7 +24,7 @@ export const integralNames = {
     latexLetters: ['E'],
     latexIndices: { count: 1, place: 'subscript' },
     latexForm: subscripted('E'),
-    unicodeForm: ([n = '', x = '']) => `E${n}(${x})`,
+    unicodeForm: ([n = '', x = '']) => `E_${n}(${x})`,
     plain: ['expint'],
     mpmath: ([n = '', x = '']) => (n === '1' ? `e1(${x})` : `expint(${n},${x})`),
     code: { python: ['expn', 'exp1', 'e1', 'expint'], julia: 'expint', matlab: 'expint', cpp: 'expint' },

@@ -168,7 +168,7 @@ export function binadeRuns(pieces: readonly ErrorPiece[], r: number, { result }:
       continue;
     }
     // A sliver around a power of two: where |f| is below it, what is rounded last is less than this beyond it (a float), and rounds by no more than that.
-    const beyond = interval.up(interval.up(interval.up(r * level) * 2 ** ERROR_BITS) + before);
+    const beyond = interval.up(interval.up(r * (level * 2 ** ERROR_BITS)) + before);
     add(x, exponent, interval.up(before + Math.min(2 ** (exponent + ERROR_BITS), Math.max(2 ** (exponent - 1 + ERROR_BITS), beyond))), size);
     add(x, higher, error, size);
   }

@@ -5,7 +5,7 @@ import { askFit } from './engine/fit.ts';
 import { askGuard } from './engine/guard.ts';
 import { type EngineResources, engineTools, type EngineTools } from './engine/resources.ts';
 import { validateRequest } from './engine/validate.ts';
-import { budget, Declined, failure, type Outcome } from './outcome.ts';
+import { budget, Declined, failure, Interrupted, type Outcome } from './outcome.ts';
 import type { Answer, Request } from './protocol.ts';
 
 export type { EngineResources } from './engine/resources.ts';
@@ -25,7 +25,7 @@ export function createEngine(resources: EngineResources): Engine {
       const tagged = (answer: Answer): Answer => (id === undefined ? answer : { id, ...answer });
       const valid = validateRequest(request);
       if (!valid.ok) return tagged(valid);
-      const outcome = await guarded(() => dispatch(valid.value, tools));
+      const outcome = await guarded(() => dispatch(valid.value, tools, resources.interrupted));
       return tagged(outcome.ok ? outcome.value : outcome);
     },
   };
@@ -36,8 +36,8 @@ function identifierOf(request: unknown): string | number | undefined {
   return typeof request.id === 'string' || typeof request.id === 'number' ? request.id : undefined;
 }
 
-function dispatch(request: Request, tools: EngineTools): Promise<Outcome<Answer>> {
-  const time = budget(request.budget_ms ?? DEFAULT_BUDGET_MS);
+function dispatch(request: Request, tools: EngineTools, interrupted?: () => boolean): Promise<Outcome<Answer>> {
+  const time = budget(request.budget_ms ?? DEFAULT_BUDGET_MS, undefined, interrupted);
   switch (request.ask) {
     case 'expand':
       return askExpand(request, tools, time);
@@ -56,6 +56,7 @@ async function guarded(body: () => Promise<Outcome<Answer>>): Promise<Outcome<An
     return await body();
   } catch (error) {
     if (error instanceof Declined) return { ok: false, error: error.failure };
+    if (error instanceof Interrupted) return failure('over-budget', error.message);
     if (error instanceof RangeError) return failure('over-budget', `This expression is too large or too deeply nested to work on (${error.message}); take a part of it.`);
     return failure('undecided', `The engine met a defect of its own (${error instanceof Error ? error.message : String(error)}); please report the expression.`);
   }

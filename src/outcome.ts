@@ -19,6 +19,13 @@ export class Declined extends Error {
   }
 }
 
+/** Thrown when the request was withdrawn by whoever asked; nothing on the way takes it for an answer. */
+export class Interrupted extends Error {
+  constructor() {
+    super('This request was cancelled.');
+  }
+}
+
 /** Time budget of one request. Long loops call `check()`; it throws `Declined('over-budget')` once the time is up. */
 export interface Budget {
   check(): void;
@@ -26,12 +33,14 @@ export interface Budget {
   remaining(): number;
 }
 
-export function budget(milliseconds: number, now: () => number = () => performance.now()): Budget {
+/** `interrupted` says whether the request has been withdrawn; `check()` then throws `Interrupted`. */
+export function budget(milliseconds: number, now: () => number = () => performance.now(), interrupted: () => boolean = () => false): Budget {
   const deadline = now() + milliseconds;
   return {
     deadline,
     remaining: () => deadline - now(),
     check() {
+      if (interrupted()) throw new Interrupted();
       if (now() > deadline) throw new Declined('over-budget', `This took longer than ${milliseconds} ms; ask for fewer terms or allow more time.`);
     },
   };

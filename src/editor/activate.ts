@@ -1,6 +1,6 @@
-/** Wires the parts together. Nothing is computed and no worker is started before something is asked. */
+/** Wires the parts together. Activation itself computes nothing; the worker starts when something is asked or after the first idle second. */
 import * as vscode from 'vscode';
-import { type ClientOptions, createEngineClient } from '../worker/client.ts';
+import { type ClientOptions, createEngineClient, type EngineClient } from '../worker/client.ts';
 import { registerActions } from './actions.ts';
 import { registerCommands } from './commands.ts';
 import { Consultant } from './consultant.ts';
@@ -14,6 +14,8 @@ import { Pages } from './pages.ts';
 import { Problems } from './problems.ts';
 import type { Services } from './services.ts';
 import { Status } from './status.ts';
+
+const IDLE_MS = 1000;
 
 /** What other extensions and the in-host tests see. */
 export interface Api {
@@ -58,7 +60,27 @@ export function activateWith(context: vscode.ExtensionContext, start: ClientOpti
     registerCommands({ services, pages, problems }),
     vscode.window.onDidChangeActiveTextEditor(() => status.refresh()),
   );
+  context.subscriptions.push(warmWhenIdle(client));
   return { activation: performance.now() - began, endEngine: () => kill() };
+}
+
+/** The first hover should not have to wait for the worker's start: it starts in the first idle second after activation, with one small question. */
+function warmWhenIdle(client: EngineClient): vscode.Disposable {
+  const warm = (): void => {
+    listening.dispose();
+    if (!client.busy) void client.ask({ ask: 'expand', text: '\\sin x', language: 'latex', variable: 'x', details: ['reading', 'reach'] });
+  };
+  let timer = setTimeout(warm, IDLE_MS);
+  const listening = vscode.workspace.onDidChangeTextDocument(() => {
+    clearTimeout(timer);
+    timer = setTimeout(warm, IDLE_MS);
+  });
+  return {
+    dispose: () => {
+      clearTimeout(timer);
+      listening.dispose();
+    },
+  };
 }
 
 /** Grammars and font faces beside the bundles, by plain name only. */

@@ -51,10 +51,15 @@ export class Page implements vscode.Disposable {
   #proposals: readonly Proposal[] = [];
   #history: readonly Remembered[] = [];
   #stale: string | null = null;
+  /** The document changed while nobody saw the page; it looks again when it is shown. */
+  #outdated = false;
   #busy = 0;
   #turn = 0;
   #abort: AbortController | null = null;
   #timer: ReturnType<typeof setTimeout> | undefined;
+  #editTimer: ReturnType<typeof setTimeout> | undefined;
+  /** Changes of the document since the page last looked at it. */
+  #changes: vscode.TextDocumentContentChangeEvent[] = [];
 
   constructor(services: Services, webview: vscode.Webview, isVisible: () => boolean, check: (document: vscode.TextDocument) => Promise<CheckAnswer | null>) {
     this.#check = check;
@@ -76,6 +81,7 @@ export class Page implements vscode.Disposable {
     this.#chosen = chosen ?? (same ? this.#chosen : lasting);
     const fresh = !same || this.#mode === 'expand' || this.#mode === 'claims';
     this.#focus = { uri: document.uri, place, text };
+    this.#changes = [];
     this.#mode = mode;
     if ((mode === 'fit' || mode === 'guard') && fresh) await this.#prefill(document, place);
     await this.#refresh();
@@ -152,6 +158,7 @@ export class Page implements vscode.Disposable {
 
   dispose(): void {
     clearTimeout(this.#timer);
+    clearTimeout(this.#editTimer);
     this.#abort?.abort();
     for (const listener of this.#listeners) listener.dispose();
   }
@@ -161,6 +168,10 @@ export class Page implements vscode.Disposable {
       case 'ready':
         this.#post();
         if (!this.#focus) await this.#begin(message.kept);
+        else if (this.#outdated) {
+          this.#outdated = false;
+          await this.#refresh();
+        }
         return;
       case 'choose':
         return this.choose(message.question);
@@ -227,11 +238,20 @@ export class Page implements vscode.Disposable {
   }
 
   #textChanged({ document, contentChanges }: vscode.TextDocumentChangeEvent): void {
+    if (contentChanges.length === 0 || this.#focus?.uri.toString() !== document.uri.toString()) return;
+    this.#changes.push(...contentChanges);
+    clearTimeout(this.#editTimer);
+    this.#editTimer = setTimeout(() => this.#takeChanges(document), FOLLOW_PAUSE_MS);
+  }
+
+  #takeChanges(document: vscode.TextDocument): void {
     const focus = this.#focus;
-    if (!focus || focus.uri.toString() !== document.uri.toString() || contentChanges.length === 0) return;
+    const changes = this.#changes;
+    this.#changes = [];
+    if (!focus || document.isClosed) return;
     let { start, end } = focus.place;
     let touched = false;
-    for (const { rangeOffset, rangeLength, text } of contentChanges) {
+    for (const { rangeOffset, rangeLength, text } of changes) {
       if (rangeOffset + rangeLength <= start) {
         start += text.length - rangeLength;
         end += text.length - rangeLength;
@@ -244,8 +264,8 @@ export class Page implements vscode.Disposable {
       return;
     }
     this.#focus = { ...focus, place: { start, end } };
-    clearTimeout(this.#timer);
-    this.#timer = setTimeout(() => void this.#refresh().catch((error: unknown) => this.#services.log.error('page', error)), FOLLOW_PAUSE_MS);
+    this.#outdated = !this.#isVisible();
+    if (!this.#outdated) void this.#refresh().catch((error: unknown) => this.#services.log.error('page', error));
   }
 
   async #refresh(): Promise<void> {

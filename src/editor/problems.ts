@@ -2,6 +2,7 @@
 import * as vscode from 'vscode';
 import type { CheckAnswer, Finding } from '../protocol.ts';
 import type { NoteReading } from '../worker/desk/types.ts';
+import { CheckSchedule } from './checkSchedule.ts';
 import { rangeOf } from './edits.ts';
 import { checkImplementations } from './implementations.ts';
 import { engineLanguage, serves } from './languages.ts';
@@ -9,7 +10,6 @@ import type { Services } from './services.ts';
 import { type Settings, settingsFor } from './settings.ts';
 import type { Counts } from './status.ts';
 
-const PAUSE_MS = 700;
 const SOURCE = 'Leading Order';
 
 /** What the last check found, with the version it is about. */
@@ -22,19 +22,26 @@ export class Problems implements vscode.Disposable {
   readonly #services: Services;
   readonly #collection = vscode.languages.createDiagnosticCollection('leadingOrder');
   readonly #checked = new Map<string, Checked>();
-  readonly #timers = new Map<string, ReturnType<typeof setTimeout>>();
+  readonly #schedule: CheckSchedule<vscode.TextDocument>;
+  readonly #saved = new WeakSet<vscode.TextDocument>();
   readonly #running = new Map<string, AbortController>();
   readonly #listeners: vscode.Disposable;
 
   constructor(services: Services) {
     this.#services = services;
+    this.#schedule = new CheckSchedule({
+      // The offset of the end is kept by the editor; the text would have to be put together.
+      sizeOf: (document) => (document.isClosed ? 0 : document.offsetAt(document.lineAt(document.lineCount - 1).range.end)),
+      begin: (document) => this.#begin(document),
+      withdraw: (document) => this.#running.get(document.uri.toString())?.abort(),
+    });
     this.#listeners = vscode.Disposable.from(
-      vscode.workspace.onDidOpenTextDocument((document) => this.#later(document, ['typing', 'save'], 0)),
-      vscode.workspace.onDidChangeTextDocument(({ document, contentChanges }) => contentChanges.length > 0 && this.#later(document, ['typing'], PAUSE_MS)),
-      vscode.workspace.onDidSaveTextDocument((document) => this.#later(document, ['typing', 'save'], 0)),
-      vscode.workspace.onDidCloseTextDocument((document) => this.#forget(document.uri)),
+      vscode.workspace.onDidOpenTextDocument((document) => this.#soon(document)),
+      vscode.workspace.onDidChangeTextDocument(({ document, contentChanges }) => contentChanges.length > 0 && this.#schedule.changed(document)),
+      vscode.workspace.onDidSaveTextDocument((document) => this.#soon(document)),
+      vscode.workspace.onDidCloseTextDocument((document) => this.#forget(document)),
     );
-    for (const document of vscode.workspace.textDocuments) this.#later(document, ['typing', 'save'], 0);
+    for (const document of vscode.workspace.textDocuments) this.#soon(document);
   }
 
   /** The findings of the document as it stands; null where it has changed since or was never checked. */
@@ -77,28 +84,30 @@ export class Problems implements vscode.Disposable {
   dispose(): void {
     this.#listeners.dispose();
     this.#collection.dispose();
-    for (const timer of this.#timers.values()) clearTimeout(timer);
+    this.#schedule.dispose();
     for (const abort of this.#running.values()) abort.abort();
   }
 
-  #later(document: vscode.TextDocument, when: readonly Settings['check'][], pause: number): void {
-    if (!serves(document) || !when.includes(settingsFor(document).check)) return;
-    const key = document.uri.toString();
-    clearTimeout(this.#timers.get(key));
-    this.#timers.set(
-      key,
-      setTimeout(() => {
-        this.#timers.delete(key);
-        if (!document.isClosed && mayHoldClaims(document)) void this.check(document).catch((error: unknown) => this.#services.log.error('check', error));
-      }, pause),
-    );
+  /** Opened or saved. */
+  #soon(document: vscode.TextDocument): void {
+    this.#saved.add(document);
+    this.#schedule.soon(document);
   }
 
-  #forget(uri: vscode.Uri): void {
+  /** The pause is over: only now the settings and the text are looked at. */
+  #begin(document: vscode.TextDocument): void {
+    const saved = this.#saved.delete(document);
+    if (document.isClosed || !serves(document)) return;
+    const { check } = settingsFor(document);
+    if (check === 'command' || (check === 'save' && !saved) || !mayHoldClaims(document)) return;
+    void this.check(document).catch((error: unknown) => this.#services.log.error('check', error));
+  }
+
+  #forget(document: vscode.TextDocument): void {
+    const { uri } = document;
     const key = uri.toString();
-    clearTimeout(this.#timers.get(key));
-    this.#running.get(key)?.abort();
-    this.#timers.delete(key);
+    this.#schedule.forget(document);
+    this.#saved.delete(document);
     this.#running.delete(key);
     this.#checked.delete(key);
     this.#collection.delete(uri);

@@ -5,6 +5,8 @@ import { CodeReader } from '../read/index.ts';
 export interface EngineResources {
   /** Bytes of a bundled file (a grammar, the parser runtime) by name. Rejects where there is no such file. */
   readonly loadFile: (name: string) => Promise<Uint8Array>;
+  /** Whether the request that is being answered has been withdrawn. Asked often, so it must be cheap; without it a request ends by its time alone. */
+  readonly interrupted?: () => boolean;
 }
 
 /** State that lives as long as one engine: loaded grammars, verdicts of earlier checks. */

@@ -1,4 +1,4 @@
-/** The host's end: starts the worker on first use, keeps one request in it at a time, cancels by ending the worker, and starts a fresh one when it dies. */
+/** The host's end: starts the worker on first use, keeps one request in it at a time, cancels by a shared flag where there is one and else by ending the worker, and starts a fresh one when it dies. */
 import type { Answer, ErrorAnswer, Request } from '../protocol.ts';
 import type { DeskAnswer, DeskAnswerTo, DeskRequest } from './desk/types.ts';
 import type { FromWorker, ToWorker } from './messages.ts';
@@ -7,6 +7,8 @@ import type { FromWorker, ToWorker } from './messages.ts';
 export interface WorkerHandle {
   post(message: ToWorker): void;
   end(): void;
+  /** Tells a worker that is busy with this ticket to give up; it then answers soon. Absent where no memory can be shared. */
+  interrupt?(ticket: number): void;
 }
 export interface WorkerEvents {
   message(message: FromWorker): void;
@@ -40,11 +42,13 @@ export interface EngineClient {
 }
 
 const DEFAULT_BUDGET = 5000;
+/** A worker that was told to give up has this long to answer before it is ended, in milliseconds. */
+const GIVING_UP = 1500;
 const budgetOf = (request: Request | DeskRequest): number => ('budget_ms' in request ? request.budget_ms : undefined) ?? DEFAULT_BUDGET;
 
 export function createEngineClient(options: ClientOptions): EngineClient {
   const queue: Job[] = [];
-  let current: { readonly job: Job; readonly ticket: number; timer: ReturnType<typeof setTimeout> | undefined } | null = null;
+  let current: { readonly job: Job; readonly ticket: number; timer: ReturnType<typeof setTimeout> | undefined; posted: boolean } | null = null;
   let worker: WorkerHandle | null = null;
   let generation = 0;
   let ticket = 0;
@@ -105,7 +109,7 @@ export function createEngineClient(options: ClientOptions): EngineClient {
     }
     ticket += 1;
     const mine = ticket;
-    const entry = { job, ticket: mine, timer: undefined as ReturnType<typeof setTimeout> | undefined };
+    const entry = { job, ticket: mine, timer: undefined as ReturnType<typeof setTimeout> | undefined, posted: false };
     current = entry;
     try {
       worker ??= await start();
@@ -115,6 +119,10 @@ export function createEngineClient(options: ClientOptions): EngineClient {
       return pump();
     }
     if (current !== entry) return;
+    if (job.cancelled) {
+      current = null;
+      return pump();
+    }
     const budget = budgetOf(job.request);
     const limit = budget + (options.grace ?? 2000);
     entry.timer = setTimeout(() => {
@@ -124,6 +132,7 @@ export function createEngineClient(options: ClientOptions): EngineClient {
       refuse(job, `This took longer than ${budget} ms; ask for fewer terms or allow more time.`);
       void pump();
     }, limit);
+    entry.posted = true;
     worker.post({ kind: 'ask', ticket: mine, request: job.request });
   };
 
@@ -135,11 +144,22 @@ export function createEngineClient(options: ClientOptions): EngineClient {
         'abort',
         () => {
           job.cancelled = true;
-          if (current?.job === job) {
-            drop();
-            refuse(job, 'This request was cancelled.');
-            void pump();
+          if (current?.job !== job) return;
+          refuse(job, 'This request was cancelled.');
+          // A worker that is only starting is as good for the next request.
+          if (!current.posted) return;
+          if (worker?.interrupt) {
+            worker.interrupt(current.ticket);
+            clearTimeout(current.timer);
+            current.timer = setTimeout(() => {
+              if (current?.job !== job) return;
+              drop();
+              void pump();
+            }, GIVING_UP);
+            return;
           }
+          drop();
+          void pump();
         },
         { once: true },
       );

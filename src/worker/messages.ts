@@ -15,4 +15,6 @@ export type FromWorker =
 export interface Port<Sent, Received> {
   post(message: Sent): void;
   listen(handler: (message: Received) => void): void;
+  /** Ticket of the request that was withdrawn last, where host and worker share memory: a busy worker hears no message. */
+  withdrawn?(): number;
 }

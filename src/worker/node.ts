@@ -1,8 +1,10 @@
 /** Entry of the worker bundle for Node's worker threads. */
-import { parentPort } from 'node:worker_threads';
+import { parentPort, workerData } from 'node:worker_threads';
 import { serve } from './serve.ts';
 
 if (parentPort) {
   const port = parentPort;
-  serve({ post: (message) => port.postMessage(message), listen: (handler) => void port.on('message', handler) });
+  const shared: unknown = workerData;
+  const flag = shared instanceof SharedArrayBuffer ? new Int32Array(shared) : null;
+  serve({ ...(flag ? { withdrawn: () => Atomics.load(flag, 0) } : {}), post: (message) => port.postMessage(message), listen: (handler) => void port.on('message', handler) });
 }

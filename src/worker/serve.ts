@@ -18,7 +18,9 @@ export function serve(port: Port<FromWorker, ToWorker>): void {
       refused.set(name, [reject]);
       port.post({ kind: 'wantFile', name });
     });
-  const engine = createEngine({ loadFile });
+  let answering = 0;
+  const { withdrawn } = port;
+  const engine = createEngine({ loadFile, ...(withdrawn ? { interrupted: () => withdrawn() === answering } : {}) });
   const desk = createDesk({ engine, loadFile });
   let last: Promise<void> = Promise.resolve();
   port.listen((message) => {
@@ -32,6 +34,7 @@ export function serve(port: Port<FromWorker, ToWorker>): void {
     }
     const { ticket, request } = message;
     last = last.then(async () => {
+      answering = ticket;
       port.post({ kind: 'answer', ticket, answer: 'desk' in request ? await desk.ask(request) : await engine.ask(request) });
     });
   });

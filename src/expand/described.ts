@@ -78,10 +78,11 @@ function inOneArgument(s: Session, d: FunctionDescription, args: readonly Multi[
     kind: 'finite',
     center: exactOf(c, constant),
     offset: build.symbol(offset),
-    side: sign === 'complex' || sign === 0 || !isRealMulti(c, small) ? 'complex' : 'both',
+    side: sign === 'complex' || sign === 0 ? 'complex' : isRealMulti(c, small) ? 'both' : sign === 1 ? 'right' : 'complex',
   };
   const form = d.local?.(trees, index, place) ?? null;
   if (form) return evaluateForm(bind(s, [[(z as { name: string }).name, f], [offset, small]]), form, evaluate, place.side === 'both');
+  if (place.side === 'complex' && d.local?.(trees, index, { ...place, side: 'right' })) throw new Declined('no-expansion', `${title(d)} is not expanded at this point along a complex direction; choose a side on which its argument is real.`);
   const constants = trees.map((t, k) => (k === index ? exactOf(c, constant) : t));
   const taylor = taylorFromEquation(c, d, constants, index, constant);
   if (taylor) return compose(c, taylor, small);

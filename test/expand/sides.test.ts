@@ -54,3 +54,9 @@ test('an order counts inside the prefactor (E_1, DLMF 6.12.1)', () => {
   expect(same(found.terms[4]?.coefficient ?? build.number(0), plain('24'))).toBe(true);
   expect(same(found.remainder?.power ?? build.number(0), plain('5'))).toBe(true);
 });
+
+test('a function on the real line is expanded on the side where its argument is real', () => {
+  const found = expansionOf('\\operatorname{Ei}(\\arccos x)', { at: '1', terms: 1 });
+  expect(found.side).toBe('left');
+  expect(found.assumptions).toContain('x < 1');
+});

@@ -36,6 +36,11 @@ function arguments_(low: number, high: number, centre: number, least: number): I
     let far = end;
     for (let k = 0; Math.abs(far - centre) > least; k += 1) {
       const near = centre + (far - centre) / 2;
+      if (near === centre || near === far) {
+        // No double lies between: the last float by itself, so that the centre stays out.
+        list.push({ lo: far, hi: far });
+        break;
+      }
       cut(Math.min(near, far), Math.max(near, far), k === 0 ? PIECES / 2 : k < 3 ? PIECES / 4 : k < 8 ? 6 : k < 24 ? 2 : 1);
       far = near;
     }

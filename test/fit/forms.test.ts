@@ -66,3 +66,11 @@ describe('rounding error in ulp', () => {
     expect(answer.code).toMatch(/return x \+ x\*u\*/);
   });
 });
+
+describe('rounding error relative to a function with a zero', () => {
+  it.each(['binary32', 'binary64'])('log beside 1 in %s: the bound reaches the floats next to the zero', async (format) => {
+    const answer = await fitAnswer({ text: 'log(x)', interval: ['3/4', '3/2'], measure: 'relative', degree: 18, format, emit: 'javascript' });
+    expect(answer.centre).toBe('1');
+    expect(Number(answer.bound.evaluation)).toBeLessThan(format === 'binary64' ? 1e-15 : 3e-7);
+  });
+});

@@ -1,5 +1,5 @@
 /** A guard as a function in a programming language: the comparison, the series, the direct form, and a comment that states what was proved. */
-import { build, dependsOn, type Expression, mapChildren, Q, type Rational, structureKey, walk } from '../expression/index.ts';
+import { build, children, dependsOn, type Expression, mapChildren, Q, type Rational, structureKey } from '../expression/index.ts';
 import { type FloatFormat, wrapCode } from '../fit/index.ts';
 import { Declined } from '../outcome.ts';
 import { codeLanguage, commentLines, functionCode, type LanguageRow, type Statement } from '../write/index.ts';
@@ -69,7 +69,13 @@ const usedSteps = ({ steps, result }: SeriesForm): SeriesForm['steps'] =>
 export function named(e: Expression, taken: ReadonlySet<string>): { readonly steps: readonly { readonly name: string; readonly value: Expression }[]; readonly result: Expression } {
   const multiplied = powersAsProducts(e);
   const counts = new Map<string, number>();
-  for (const node of walk(multiplied)) if (worthNaming(node)) counts.set(structureKey(node), (counts.get(structureKey(node)) ?? 0) + 1);
+  // What stands inside a repeated quantity is counted once with it.
+  const count = (node: Expression): void => {
+    const seen = counts.get(structureKey(node)) ?? 0;
+    if (worthNaming(node)) counts.set(structureKey(node), seen + 1);
+    if (seen === 0) children(node).forEach(count);
+  };
+  count(multiplied);
   const steps: { name: string; value: Expression }[] = [];
   const names = new Map<string, Expression>();
   const free = ['s', 'r', 'q', 'p', 'w', 'v', 'y', 'z'].filter((n) => !taken.has(n));
@@ -78,8 +84,8 @@ export function named(e: Expression, taken: ReadonlySet<string>): { readonly ste
     const key = structureKey(node);
     const known = names.get(key);
     if (known) return known;
-    const name = free[steps.length];
     const value = mapChildren(node, visit);
+    const name = free[steps.length];
     if (name === undefined) return value;
     steps.push({ name, value });
     const symbol = build.symbol(name);

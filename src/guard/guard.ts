@@ -18,6 +18,8 @@ const MOST_TERMS = 24;
 const PLATEAU = 1.1;
 /** A plainer form is kept where others gain less than this. */
 const PREFERENCE = 1.4;
+/** Switches whose series is bounded closely, for each number of terms. */
+const LOOKED_AT = 3;
 /** A few ulp, in unit roundoffs: better than that is no reason for a dearer form. */
 const FEW_UNITS = 8;
 
@@ -278,13 +280,16 @@ function candidate(form: ExactForm, sides: readonly Side[], setting: Setting, sh
   const goal = problem.tolerance ? Q.toDouble(problem.tolerance) : rewritten ? FEW_UNITS * 2 ** -format.precision : null;
   for (let n = 1; n <= shared.terms.powers.length; n += 1) {
     budget.check();
-    // The truncation error grows with h, the direct one falls: the crossing is found among the ends of stretches.
+    // The truncation error grows with h, the direct one falls: the places where the larger of them is least are looked at closely.
     let best: Candidate | null = null;
-    for (const h of distances) {
-      const direct = beyond(h);
-      if (direct === null) continue;
-      const truncated = truncationError(shared, n, h, problem);
-      if (best && truncated > best.whole) break;
+    const places = distances
+      .flatMap((h) => {
+        const direct = beyond(h);
+        return direct === null ? [] : [{ h, direct, least: Math.max(direct, truncationError(shared, n, h, problem)) }];
+      })
+      .sort((p, q) => p.least - q.least || Q.compare(q.h, p.h));
+    for (const { h, direct, least } of places.slice(0, LOOKED_AT)) {
+      if (best && least >= best.whole) break;
       const own = seriesError(shared, n, h, problem, scanner);
       const total = Math.max(own, direct);
       if (!best || total < best.whole) best = { form, scans, series: formOf(shared, n, problem), seriesText: shared.terms.texts.slice(0, n).join(' + ').replaceAll('+ -', '- '), switch: h, seriesBound: own, directBound: direct === 0 ? null : direct, whole: total };

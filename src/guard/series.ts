@@ -116,7 +116,9 @@ export class Truncation {
   }
 
   #upTo(h: Rational): Reached {
-    const reach = halfStepAbove(h, this.reach);
+    // Far inside the reach one model serves all.
+    const inner = Q.multiply(this.reach, powerOfTwo(-6));
+    const reach = halfStepAbove(Q.compare(h, inner) < 0 ? inner : h, this.reach);
     const key = Q.toText(reach);
     let found = this.#reached.get(key);
     if (!found) this.#reached.set(key, (found = { reach, models: this.#make(reach), quotients: new Map() }));

@@ -28,6 +28,8 @@ export interface Context {
   readonly calls: Map<string, Element>;
   /** Logarithms of products met so far, by the key of their split form: for writing only. */
   readonly joined: Map<string, JoinedLogarithm>;
+  /** Keys of u where a root of u/n or u m/n was taken: for writing only. */
+  readonly fractionRoots: Set<string>;
   readonly call: (id: string, args: readonly Element[]) => Element;
   /** Sign of an element without parameters by balls; null where it stays open or is not real. */
   readonly signOfNumber: (a: Element) => -1 | 1 | null;

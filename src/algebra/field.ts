@@ -44,6 +44,7 @@ export function createField(assumptions: readonly Assumption[], budget: Budget, 
     read: (e) => fromExpression(ctx, e),
     calls: new Map(),
     joined: new Map(),
+    fractionRoots: new Set(),
     call: (id, args) => callFunction(ctx, id, args),
     signOfNumber(a) {
       const s = constantSign(a);

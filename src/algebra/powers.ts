@@ -1,6 +1,6 @@
 /** Powers, exponentials and logarithms with principal branches. */
 import { Q, type Rational } from '../expression/index.ts';
-import { constantKernel, expKernel, imaginaryKernel, integerKernel, isZeroRational, kernelElement, logKernel, minus, powerKernel, rationalOf, undecided, withSquaresJoined, type Context } from './context.ts';
+import { constantKernel, expKernel, imaginaryKernel, isZeroRational, kernelElement, logKernel, minus, powerKernel, rationalOf, undecided, withSquaresJoined, type Context } from './context.ts';
 import { compareExponents, exponentFromRational, isWhole, multiplyExponents, type Exponent } from './exponent.ts';
 import { denestedCubeRoot, denestedSquareRoot, dependentSquareRoot } from './denest.ts';
 import { factorInteger } from './integers.ts';
@@ -83,6 +83,7 @@ export function rationalPower(ctx: Context, base: Element, r: Rational): Element
   }
   const exponent = exponentFromRational(r);
   const parts = partsOf(a);
+  if (parts.content.den !== 1n && r.den === 2n && isQuotient(a)) ctx.fractionRoots.add(elementKey(scaleElement(a, Q.reciprocal(parts.content))));
   let result = positiveRationalPower(ctx, parts.content, r);
   let negative = parts.content.num < 0n;
   let open: Element = Q.ONE;

@@ -9,7 +9,7 @@ import { exponentIn, isUnit, monomialKey, multiplyMonomials, UNIT, withoutKernel
 import { contentOf, divideByInteger, isOnePolynomial, kernelsIn, ONE_POLYNOMIAL, shiftPolynomial, type Polynomial, type Term } from './polynomial.ts';
 import { addElements, elementKey, invertElement, isQuotient, kernelsOf, multiplyElements, negateElement, normalise, partsOf, reduceByRelations, scaleElement, wholePower, type Factor, type Quotient } from './quotient.ts';
 import { POSITIVE } from './signs.ts';
-import { asElement } from './split.ts';
+import { asElement, singleKernel } from './split.ts';
 import { squareFreeFactors } from './squareFree.ts';
 import { asSingleCosine, cosineOfPi } from './unitCircle.ts';
 import type { Element } from './types.ts';
@@ -275,7 +275,10 @@ function writeProduct(ctx: Context, content: Rational, monomial: Monomial, extra
   joinAbsolutes(ctx, powers, monomial);
   joinRoots(ctx, powers, monomial);
   joinPowers(ctx, powers);
-  const root = joinedSquareRoot(ctx, [...powers.values()], radicals.get(2) ?? 1n);
+  const two = radicals.get(2) ?? 1n;
+  // sqrt(2)/2 sqrt(u) is sqrt(u/2) where that root was met.
+  const lower = two !== 1n && content.den % two === 0n && [...powers.values()].some((p) => p.open !== undefined && isHalf(p.exponent) && ctx.fractionRoots.has(elementKey(p.open)));
+  const root = joinedSquareRoot(ctx, [...powers.values()], lower ? 1n : two, lower ? two : 1n);
   const plainRoot = root !== null && ![...walk(root)].some((e) => e.kind !== 'number' && e.kind !== 'constant' && e.kind !== 'power' && e.kind !== 'product' && e.kind !== 'quotient');
   if (root && !plainRoot) powers.set('square root', { rank: RANK.root, order: 0, base: () => root, exponent: Q.ONE, positive: false });
   const rankOf = (p: Power): number => (rationalOf(p.exponent) ? p.rank : Math.max(p.rank, RANK.function));
@@ -305,7 +308,7 @@ function writeProduct(ctx: Context, content: Rational, monomial: Monomial, extra
   place();
   placeExponential();
 
-  const size = Q.absolute(content);
+  const size = Q.absolute(lower && root ? Q.multiply(content, Q.rational(two)) : content);
   if (size.num !== 1n || top.length === 0) {
     if (bottom.length === 0 && top.length === 0) return numberExpression(flipped ? Q.negate(content) : content);
     top.unshift(build.number(size.num));
@@ -319,26 +322,26 @@ function writeProduct(ctx: Context, content: Rational, monomial: Monomial, extra
  * Square roots of positive numbers, constants and parameters under one root: sqrt(2 pi), sqrt(a b), sqrt(2/pi); the powers used up get exponent zero.
  * One root of something of unknown sign may join them, since sqrt(2) sqrt(u) = sqrt(2 u) for all u.
  */
-function joinedSquareRoot(ctx: Context, powers: readonly Power[], integer: bigint): Expression | null {
+function joinedSquareRoot(ctx: Context, powers: readonly Power[], integer: bigint, divisorUnder: bigint): Expression | null {
   const candidates = powers.filter((p) => (p.rank === RANK.parameter || p.rank === RANK.constant) && p.positive);
   const above = candidates.filter((p) => isHalf(p.exponent));
   const unknown = powers.filter((p) => ((p.rank === RANK.parameter && !p.positive) || p.open !== undefined) && isHalf(p.exponent));
   const [alone] = unknown;
   const below = unknown.length < 2 ? candidates.filter((p) => 'num' in p.exponent && p.exponent.num === -1n && p.exponent.den === 2n) : [];
   const joins = unknown.length === 1 && alone !== undefined;
-  if (integer === 1n && above.length === 0 && (!joins || (below.length === 0 && alone.open === undefined))) return null;
+  if (integer === 1n && divisorUnder === 1n && above.length === 0 && (!joins || (below.length === 0 && alone.open === undefined))) return null;
   if (joins && alone.open === undefined) above.push(alone);
   // A lone root below stays there: 1/sqrt(pi); with something above they share one: sqrt(2/pi).
   const top = build.product(...(integer === 1n ? [] : [build.number(integer)]), ...above.map((p) => p.base()));
-  const bottom = build.product(...below.map((p) => p.base()));
+  const under = [...(divisorUnder === 1n ? [] : [build.number(divisorUnder)]), ...below.map((p) => p.base())];
   for (const p of [...above, ...below]) p.exponent = Q.ZERO;
-  if (!joins || alone.open === undefined) return build.power(below.length === 0 ? top : build.quotient(top, bottom), Q.HALF);
+  if (!joins || alone.open === undefined) return build.power(below.length === 0 ? top : build.quotient(top, build.product(...under)), Q.HALF);
   alone.exponent = Q.ZERO;
   const inner = toExpression(ctx, alone.open);
-  if (build.isOneNumber(top) && below.length === 0) return build.power(inner, Q.HALF);
-  const [over, under] = inner.kind === 'quotient' ? [inner.numerator, inner.denominator] : [inner, null];
-  const product = build.isOneNumber(over) ? top : build.product(top, ...(over.kind === 'product' ? over.factors : [over]));
-  const divisor = [...below.map((p) => p.base()), ...(under ? (under.kind === 'product' ? under.factors : [under]) : [])];
+  if (build.isOneNumber(top) && under.length === 0) return build.power(inner, Q.HALF);
+  const [over, inside] = inner.kind === 'quotient' ? [inner.numerator, inner.denominator] : [inner, null];
+  const product = build.isOneNumber(over) ? top : build.product(...(build.isOneNumber(top) ? [] : [top]), ...(over.kind === 'product' ? over.factors : [over]));
+  const divisor = [...under, ...(inside ? (inside.kind === 'product' ? inside.factors : [inside]) : [])];
   return build.power(divisor.length === 0 ? product : build.quotient(product, build.product(...divisor)), Q.HALF);
 }
 
@@ -358,9 +361,23 @@ function joinRoots(ctx: Context, powers: Map<string, Power>, monomial: Monomial)
     if (plain && exponent.num > 0n) {
       const factors = parts.monomial.kernels.map((k, i) => ({ power: powers.get(elementKey(kernelElement(ctx, ctx.table.kernels[k] as Kernel))), e: exponentToRational(parts.monomial.exponents[i] as Exponent) }));
       const below = factors.every(({ power, e }) => power && !isQuotient(power.exponent) && Q.compare(power.exponent, Q.negate(e)) <= 0);
-      if (below && Q.isOne(parts.content)) {
+      // |b| (a b)^(1/2)/a^2 is b (a/b)^(-1/2)/a.
+      const bars = monomial.kernels.some((k) => {
+        const { shape } = ctx.table.kernels[k] as Kernel;
+        const inner = shape.kind === 'abs' ? singleKernel(shape.argument) : null;
+        const s = inner && exponentIn(parts.monomial, inner.kernel) !== 0 ? powers.get(elementKey(kernelElement(ctx, ctx.table.kernels[k] as Kernel)))?.exponent : undefined;
+        return s !== undefined && !isQuotient(s) && Q.equal(s, Q.multiply(Q.rational(-2), Q.subtract(r, Q.ONE)));
+      });
+      const some = factors.some(({ power, e }) => power && !isQuotient(power.exponent) && Q.compare(power.exponent, Q.negate(e)) <= 0);
+      if ((below || (bars && some)) && Q.isOne(parts.content)) {
         exponent = Q.subtract(exponent, Q.ONE);
-        for (const { power, e } of factors) if (power) power.exponent = addElements(ctx.table, power.exponent, e);
+        factors.forEach(({ power, e }, i) => {
+          if (power) power.exponent = addElements(ctx.table, power.exponent, e);
+          else {
+            const factor = ctx.table.kernels[parts.monomial.kernels[i] as number] as Kernel;
+            powers.set(elementKey(kernelElement(ctx, factor)), { rank: factor.shape.kind === 'parameter' ? RANK.parameter : RANK.function, order: factor.index, base: () => kernelExpression(ctx, factor), exponent: e, positive: ctx.signs.ofKernel(factor) === POSITIVE });
+          }
+        });
       }
     }
     for (const other of monomial.kernels) {
@@ -371,7 +388,7 @@ function joinRoots(ctx: Context, powers: Map<string, Power>, monomial: Monomial)
       if (!bars || !s || s.num === 0n) continue;
       const m = Q.divide(s, exponent);
       if (m.den !== 1n || m.num % 2n !== 0n || m.num >= 0n) continue;
-      const single = multiplyElements(ctx.table, base, invertElement(ctx.table, size.shape.argument));
+      const single = multiplyElements(ctx.table, kernel.shape.base, invertElement(ctx.table, size.shape.argument));
       if (isQuotient(single) && (single.denominator.length > 0 || single.monomial.exponents.some((e) => numeratorOf(e) < 0))) continue;
       base = multiplyElements(ctx.table, base, wholePower(ctx.table, size.shape.argument, Number(m.num)));
       bars.exponent = Q.ZERO;

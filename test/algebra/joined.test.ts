@@ -30,6 +30,8 @@ describe('roots of quotients', () => {
     // Common practice.
     [sq(b.quotient(b.product(n(2), s('E')), s('m'))), [], 'sqrt(2*E/m)'],
     [b.quotient(n(1), sq(b.quotient(s('k'), s('m')))), [], '1/sqrt(k/m)'],
+    [b.power(b.quotient(s('a'), s('d')), Q.rational(-3, 2)), [], 'd/(a*sqrt(a/d))'],
+    [sq(b.quotient(s('k'), b.product(n(2), s('m')))), [], 'sqrt(k/(2*m))'],
     [b.call('sin', sq(b.quotient(b.sum(s('a'), s('c')), s('d')))), [], 'sin(sqrt((a + c)/d))'],
   ] as [Expression, Assumption[], string][])('%#', (e, assume, expected) => expect(simplify(e, assume)).toBe(expected));
 

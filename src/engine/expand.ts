@@ -46,7 +46,9 @@ function expanderOf(request: ExpandRequest, source: SourceFormula, time: Budget)
   const { stated, ...problem } = question.value;
   const withStated = (outcome: Outcome<Expansion>): Outcome<Expansion> =>
     outcome.ok && stated.length > 0 ? success({ ...outcome.value, assumptions: [...outcome.value.assumptions, ...stated.filter((s) => !outcome.value.assumptions.includes(s))] }) : outcome;
-  return run((n) => withStated(expand({ ...problem, ...n } satisfies ExpansionProblem, time)));
+  // A hover asks for details but has no room for the radius; every other answer states it, and where no number of terms serves it is the reach.
+  const radius = request.details === undefined || request.details.includes('ladder') || request.tolerance !== undefined;
+  return run((n) => withStated(expand({ ...problem, radius, ...n } satisfies ExpansionProblem, time)));
 }
 
 type Run = (solve: (size: { readonly terms?: number; readonly order?: Rational }) => Outcome<Expansion>) => Outcome<Expander>;

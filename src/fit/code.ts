@@ -36,6 +36,17 @@ export function rowFor(language: string): LanguageRow {
 
 const computesInDoubles = (row: LanguageRow): boolean => row.family === 'javascript';
 
+/** The float type that code in this language is written in for a format: its own, or a wider one for formats that are only stored (binary16, bfloat16). */
+export function codeFormat(language: string, format: FloatFormat): FloatFormat {
+  const row = rowFor(language);
+  if (row.floats[format.name]) return format;
+  for (const name of format.name === 'binary16' || format.name === 'bfloat16' ? (['binary32', 'binary64'] as const) : []) {
+    const wider = formatByName(name);
+    if (row.floats[name] && wider?.kind === 'float') return wider;
+  }
+  throw new Declined('bad-request', `${row.title} has no ${format.name} type; choose another format or language.`);
+}
+
 /** In which formats code in this language computes for a result of the format. */
 export function machineArithmetic(language: string, format: FloatFormat): Arithmetic {
   const row = rowFor(language);
@@ -43,7 +54,7 @@ export function machineArithmetic(language: string, format: FloatFormat): Arithm
     const operations = formatByName('binary64');
     if (operations?.kind === 'float') return { operations, result: format };
   }
-  return { operations: format, result: format };
+  return { operations: codeFormat(language, format), result: format };
 }
 
 export type Fusing = 'exactly' | 'perhaps' | 'never';

@@ -3,7 +3,7 @@ import { type Expression, Q, type Rational } from '../expression/index.ts';
 import { attempt, type Budget, Declined, type Outcome } from '../outcome.ts';
 import { real } from '../rigorous/index.ts';
 import { codeLanguage, type PolynomialTerm, toPlain } from '../write/index.ts';
-import { type FitCodeText, fitCode, functionName, fusing, machineArithmetic, rowFor } from './code.ts';
+import { codeFormat, type FitCodeText, fitCode, functionName, fusing, machineArithmetic, rowFor } from './code.ts';
 import { fixedCode, requireIntegers } from './fixedCode.ts';
 import { fitFixedPoint } from './fixedFit.ts';
 import type { FixedFormat, FloatFormat, NumberFormat } from './format.ts';
@@ -72,8 +72,8 @@ function fitted(problem: FitProblem, budget: Budget): Fit {
   const { format, language, contraction, method } = problem;
   const row = rowFor(language);
   if (format.kind === 'fixed') return fixedPoint(problem, format, budget);
-  if (!row.floats[format.name]) throw new Declined('bad-request', `${row.title} has no ${format.name} type; choose another format or language.`);
-  const fused = contraction === 'fma' ? fusing(language, format) : 'never';
+  const written = codeFormat(language, format);
+  const fused = contraction === 'fma' ? fusing(language, written) : 'never';
   if (contraction === 'fma' && fused === 'never') throw new Declined('bad-request', `${row.title} has no fused multiply-add; ask for the contraction any or none.`);
   const shared = { ...problem, format, ...withOperations(language, format), fma: fused === 'exactly', writtenFma: contraction === 'fma' };
   if (method === 'rational') return rational(problem, { ...shared, method: 'minimax' }, format, budget);
@@ -90,7 +90,7 @@ function fitted(problem: FitProblem, budget: Budget): Fit {
     branches: parts.map(({ high, found }) => ({ below: high, program: programOf(found) })),
     variable,
     language,
-    format,
+    format: written,
     name: functionName(wordsFor(problem.function), language),
     comment,
     expression: problem.result === 'expression',
@@ -111,7 +111,7 @@ function rational(problem: FitProblem, shared: PolynomialProblem, format: FloatF
   const variable = parameterName(problem);
   const program = variable === problem.variable ? found.writtenProgram : renamed(found.writtenProgram, problem.variable, variable);
   const comment = commentOf(problem, format, found.error, assumptions);
-  const code = fitCode({ branches: [{ below: problem.high, program }], variable, language, format, name: functionName(wordsFor(problem.function), language), comment, expression: problem.result === 'expression' });
+  const code = fitCode({ branches: [{ below: problem.high, program }], variable, language, format: codeFormat(language, format), name: functionName(wordsFor(problem.function), language), comment, expression: problem.result === 'expression' });
   return { terms: found.numerator, denominator: found.denominator, format, degree: found.degree, centre: found.centre, program: found.writtenProgram, error: found.error, method: methodText(problem), code, assumptions };
 }
 
@@ -179,11 +179,12 @@ function wordsFor(f: Expression): readonly string[] {
 const METHODS = { minimax: 'best polynomial, coefficients rounded together', taylor: 'truncated expansion', economized: 'economized expansion', rational: 'best rational function' } as const;
 const methodText = ({ method }: FitProblem): string => `${METHODS[method]}; local models with proven remainders; rounding bounded operation by operation`;
 
-function assumptionsOf({ language, contraction }: FitProblem, { name }: FloatFormat): string[] {
-  const { operations } = machineArithmetic(language, { name } as FloatFormat);
+function assumptionsOf({ language, contraction }: FitProblem, format: FloatFormat): string[] {
+  const { name } = format;
+  const { operations } = machineArithmetic(language, format);
   const row = codeLanguage(language);
   const list = ['round to nearest, subnormal numbers kept', 'no optimisation that changes values (such as fast-math)'];
-  list.push(operations.name === name ? `each operation rounded to ${name}` : `operations in ${operations.name}, one rounding to ${name} at the end`);
+  list.push(operations.name === name ? `each operation rounded to ${name}` : `operations in ${operations.name}, then one rounding of the result to ${name}${row?.floats[name] ? '' : ' where it is stored'}`);
   if (contraction === 'fma') list.push('holds whether or not further products are fused with sums');
   else list.push('holds with and without fusing of products and sums (a*b + c)');
   if (row?.id === 'glsl' || row?.id === 'hlsl') list.push('the device rounds additions and multiplications correctly');

@@ -74,3 +74,17 @@ describe('rounding error relative to a function with a zero', () => {
     expect(Number(answer.bound.evaluation)).toBeLessThan(format === 'binary64' ? 1e-15 : 3e-7);
   });
 });
+
+describe('formats that are only stored', () => {
+  it.each(['binary16', 'bfloat16'])('%s: coefficients of the format, operations in binary32, one rounding at the end', async (format) => {
+    const answer = await fitAnswer({ text: 'sin(x)', interval: ['-1', '1'], degree: 5, measure: 'ulp', format, emit: 'c' });
+    expect(answer.code).toMatch(/float sin_approximation\(float x\)/);
+    expect(Number(answer.bound.evaluation)).toBeGreaterThanOrEqual(0.5);
+    expect(Number(answer.bound.total)).toBeLessThan(0.6);
+    const bits = format === 'binary16' ? 11 : 8;
+    for (const { value } of answer.coefficients) {
+      const scaled = Math.abs(Number(value)) / 2 ** (Math.floor(Math.log2(Math.abs(Number(value)))) - bits + 1);
+      expect(Math.abs(scaled - Math.round(scaled))).toBeLessThan(1e-3);
+    }
+  });
+});

@@ -182,18 +182,26 @@ async function useLibraryFunction(room: Room, target: Target): Promise<unknown> 
   const place = consultation.place ?? target.place;
   const { version } = document;
   const language = engineLanguage(document);
-  const text = document.getText().slice(place.start, place.end);
+  const text = document.getText();
   const reading = consultation.answer.ok ? consultation.answer.reading : undefined;
   const answer: GuardAnswer | ErrorAnswer = await room.services.status.during(
-    room.services.client.ask<GuardAnswer>({ ask: 'guard', text, language, emit: isCode(language) ? language : 'c', ...(reading ? { variable: reading.variable, point: reading.point } : {}), budget_ms: settingsFor(document).budget }),
+    room.services.client.ask<GuardAnswer>({ ask: 'guard', text, selection: place, language, emit: isCode(language) ? language : 'c', ...(reading ? { variable: reading.variable, point: reading.point } : {}), budget_ms: settingsFor(document).budget }),
   );
   if (!answer.ok) return say(answer.error.message);
   if (answer.forms.length === 0) return say(vscode.l10n.t('No exact form with library functions is known for this expression.'));
-  const items = answer.forms.map((form) => ({ label: form.text, description: vscode.l10n.t('relative error at most {0}', form.bound), text: form.text }));
+  const { forms, format } = answer;
+  const written = await room.services.client.consult({ desk: 'forms', text, language, place, forms: forms.map((form) => form.text), ...(format === undefined ? {} : { format }) });
+  const proposals = 'proposals' in written ? written.proposals : [];
+  // The bound was proved with products for small powers; a power function or operator in their place is not covered.
+  const items = forms.flatMap((form, i) => {
+    const proposal = proposals[i];
+    if (!proposal || proposal.edits.length === 0) return [];
+    return [{ label: proposal.preview, description: /\bpow|\*\*|\^/i.test(proposal.preview) ? '' : vscode.l10n.t('relative error at most {0}', form.bound), detail: form.identities?.join('; ') ?? '', edits: proposal.edits }];
+  });
+  if (items.length === 0) return say(vscode.l10n.t('No exact form with library functions is known for this expression.'));
   const picked = items.length === 1 ? items[0] : await vscode.window.showQuickPick(items, { title: vscode.l10n.t('Exact forms, best first') });
   if (!picked) return undefined;
-  const edit = { ...place, text: picked.text };
-  return applyChecked({ ...groundOf(document, [edit]), version }, [edit]);
+  return applyChecked({ ...groundOf(document, picked.edits), version }, picked.edits);
 }
 
 async function writeTestHarness(room: Room, target: Target): Promise<unknown> {

@@ -15,9 +15,10 @@ describe('a helper', () => {
     expect(replaced('#include <math.h>\n\n/* Speed. */\nstatic float f(float x)\n{\n    return sinf(x);\n}\n', 'sinf(x)', 'c', '// about\nstatic inline float sin_approximation(float x)\n{\n    return x;\n}\n')).toBe(
       '#include <math.h>\n\n// about\nstatic inline float sin_approximation(float x)\n{\n    return x;\n}\n\n/* Speed. */\nstatic float f(float x)\n{\n    return sin_approximation(x);\n}\n',
     ));
+  // PEP 8 wants two blank lines between the definitions of a module.
   it('in Python stands before the decorated function', () =>
     expect(replaced('import numpy as np\n\n\n@cached\ndef f(x):\n    return 2 * np.exp(x)\n', 'np.exp(x)', 'python', '# about\ndef exp_approximation(x):\n    return 1 + x\n')).toBe(
-      'import numpy as np\n\n\n# about\ndef exp_approximation(x):\n    return 1 + x\n\n@cached\ndef f(x):\n    return 2 * exp_approximation(x)\n',
+      'import numpy as np\n\n\n# about\ndef exp_approximation(x):\n    return 1 + x\n\n\n@cached\ndef f(x):\n    return 2 * exp_approximation(x)\n',
     ));
   it('in Rust stands before the attributes', () =>
     expect(replaced('#[inline]\npub fn f(x: f64) -> f64 {\n    x.sin()\n}\n', 'x.sin()', 'rust', 'fn sin_approximation(x: f64) -> f64 {\n    x\n}\n')).toBe(

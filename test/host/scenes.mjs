@@ -150,6 +150,23 @@ export const scenes = {
     await frame.locator('#mode-expand').click();
   },
 
+  'C: an expression that cancels is guarded through the page': async (page) => {
+    await openFromExplorer(page, 'controller.c');
+    await select(page, source('controller.c'), '(cosh(u) - 1.0) / (u * u)');
+    await runCommand(page, 'Leading Order: Guard This Expression');
+    const frame = await expansionFrame(page, '#compute');
+    await frame.locator('#compute').click();
+    await frame.locator('#apply-0').waitFor({ timeout: 60_000 });
+    const told = await pageSays(frame, /largest|worst|at most|bound/i);
+    holds(/guarded\(double u\)/.test(told) && /sinh/.test(told), `the page shows neither code nor form: ${told}`);
+    holds((await frame.evaluate(() => document.querySelectorAll('table.figures tbody tr').length)) >= 3, 'the ranges are missing');
+    await frame.locator('#apply-0').click();
+    const text = await waitForText(page, 'return guarded(u);');
+    holds(/double guarded\(double u\)[^]*double sag_ratio/.test(text), 'the guard does not stand before its caller');
+    await undoTo(page, 'return guarded(u);', 'return (cosh(u) - 1.0) / (u * u);');
+    await frame.locator('#mode-expand').click();
+  },
+
   'C: plain arithmetic has no hover': async (page) => {
     const at = placeOf(source('controller.c'), 'u * u / 6.0');
     await goTo(page, at.line, at.column + 2);

@@ -3,6 +3,7 @@ import type { Engine } from '../../engine.ts';
 import { consult } from './consult.ts';
 import { noteReadings } from './notes.ts';
 import { createPictureMaker } from './picture/index.ts';
+import { forms } from './proposals/forms.ts';
 import { replacement } from './proposals/helper.ts';
 import { proposals } from './proposals/index.ts';
 import type { DeskAnswer, DeskRequest } from './types.ts';
@@ -22,6 +23,8 @@ export function createDesk(room: { readonly engine: Engine; readonly loadFile: (
         return { proposals: proposals(request) };
       case 'replacement':
         return { proposals: [replacement(request)] };
+      case 'forms':
+        return { proposals: forms(request) };
       case 'picture':
         return pictures.picture(request);
       case 'notes':

@@ -89,6 +89,17 @@ export interface ReplacementRequest {
   readonly argument: string;
 }
 
+/** Exact forms in plain notation, put into the user's file in place of the expression. */
+export interface FormsRequest {
+  readonly desk: 'forms';
+  readonly text: string;
+  readonly language: string;
+  readonly place: Place;
+  readonly forms: readonly string[];
+  /** `binary32` or `binary64`, as the guard was asked for. */
+  readonly format?: string;
+}
+
 /** A formula as a picture that a Markdown image can show. `ink` is a CSS colour. */
 export interface PictureRequest {
   readonly desk: 'picture';
@@ -124,10 +135,10 @@ export interface NotesAnswer {
   readonly notes: readonly NoteReading[];
 }
 
-export type DeskRequest = ConsultRequest | ProposalsRequest | ReplacementRequest | PictureRequest | NotesRequest;
+export type DeskRequest = ConsultRequest | ProposalsRequest | ReplacementRequest | FormsRequest | PictureRequest | NotesRequest;
 export type DeskAnswerTo<R extends DeskRequest> = R extends ConsultRequest
   ? ConsultAnswer
-  : R extends ProposalsRequest | ReplacementRequest
+  : R extends ProposalsRequest | ReplacementRequest | FormsRequest
     ? ProposalsAnswer
     : R extends PictureRequest
       ? PictureAnswer

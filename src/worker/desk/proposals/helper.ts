@@ -30,7 +30,7 @@ export function replacement(request: ReplacementRequest): Proposal {
     .map((line) => (line.trim() === '' ? '' : `${indent}${line}`))
     .join(newline);
   const call = `${free}(${request.argument})`;
-  return { kind: 'helper', preview: call, edits: [...heads, ...insertion(at, `${helper}${newline}${newline}`), { ...place, text: call }] };
+  return { kind: 'helper', preview: call, edits: [...heads, ...insertion(at, `${helper}${newline.repeat(language === 'python' && indent === '' ? 3 : 2)}`), { ...place, text: call }] };
 }
 
 const insertion = (at: number, text: string): readonly TextEdit[] => [{ start: at, end: at, text }];
@@ -44,7 +44,7 @@ function withoutImports(code: string, imports: readonly string[]): string {
 }
 
 /** An expression of several terms keeps together in its new surroundings. */
-function bracketed(text: string, { start, end }: Place, code: string): string {
+export function bracketed(text: string, { start, end }: Place, code: string): string {
   const before = /(\S)\s*$/.exec(text.slice(Math.max(0, start - 40), start))?.[1] ?? '';
   const after = /^\s*(\S)/.exec(text.slice(end, end + 40))?.[1] ?? '';
   const beside = '*/-^%.'.includes(before || ' ') || '*/^%.'.includes(after || ' ');

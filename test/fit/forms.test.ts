@@ -82,9 +82,11 @@ describe('formats that are only stored', () => {
     expect(Number(answer.bound.evaluation)).toBeGreaterThanOrEqual(0.5);
     expect(Number(answer.bound.total)).toBeLessThan(0.6);
     const bits = format === 'binary16' ? 11 : 8;
-    for (const { value } of answer.coefficients) {
-      const scaled = Math.abs(Number(value)) / 2 ** (Math.floor(Math.log2(Math.abs(Number(value)))) - bits + 1);
-      expect(Math.abs(scaled - Math.round(scaled))).toBeLessThan(1e-3);
+    // The decimal is the shortest that reads back in the format; the hexadecimal text is the value itself.
+    for (const { hex } of answer.coefficients) {
+      const digits = /0x1\.?([0-9a-f]*)p/.exec(hex)?.[1] ?? '';
+      const significand = (1 + (digits === '' ? 0 : parseInt(digits, 16) / 16 ** digits.length)) * 2 ** (bits - 1);
+      expect(significand).toBe(Math.round(significand));
     }
   });
 });

@@ -69,6 +69,9 @@ export class Scanner {
 
   #boundWith(form: Expression, piece: Piece, denominator: number): number | null {
     const models = this.models(piece, denominator);
+    const whole = models.of(form);
+    // Nothing is promised where every value is below the smallest normal number.
+    if (whole && models.size(whole).most < 2 ** this.machine.format.emin) return 0;
     const normal = this.#normalPart(form, piece, models, denominator);
     const value = new Roundoff(normal, this.machine).relativeError(form);
     return value !== null && Number.isFinite(value) ? value : null;
@@ -76,7 +79,7 @@ export class Scanner {
 
   /** Where the value vanishes at the point, only distances at which it can be a normal number are promised anything. */
   #normalPart(form: Expression, piece: Piece, models: PieceModels, denominator: number): PieceModels {
-    if (piece.kind !== 'near' || piece.least > 0) return models;
+    if (piece.kind === 'plain' || (piece.kind === 'near' && piece.least > 0)) return models;
     const model = models.of(form);
     if (!model || model.valuation <= 0) return models;
     const most = interval.size(interval.fromBall(model.range));
@@ -84,6 +87,11 @@ export class Scanner {
     const { emin, precision } = this.machine.format;
     const s = (2 ** emin * (precision < 20 ? 0.5 : 1 - 2 ** -10) / most) ** (1 / model.valuation) * (1 - 2 ** -30);
     const least = s ** denominator * (1 - 2 ** -30);
+    if (piece.kind === 'infinite') {
+      if (!(least > 0 && least < 1)) return models;
+      const farthest = Q.divide(piece.reach, Q.fromDouble(least));
+      return Q.compare(farthest, piece.farthest) < 0 ? this.models({ ...piece, farthest }, denominator) : models;
+    }
     return least > 0 && least < 1 ? this.models({ ...piece, least }, denominator) : models;
   }
 

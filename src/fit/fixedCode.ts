@@ -1,5 +1,5 @@
 /** Fixed-point programs as integer code: one helper that multiplies and rounds, one function. */
-import { type Expression, Q } from '../expression/index.ts';
+import type { Expression } from '../expression/index.ts';
 import { Declined } from '../outcome.ts';
 import { commentLines } from '../write/index.ts';
 import { type FitCodeText, rowFor } from './code.ts';

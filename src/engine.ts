@@ -9,6 +9,7 @@ import { budget, Declined, failure, Interrupted, type Outcome } from './outcome.
 import type { Answer, Request } from './protocol.ts';
 
 export type { EngineResources } from './engine/resources.ts';
+export { libraryPrefix } from './engine/insertion.ts';
 
 export interface Engine {
   /** Takes untrusted data: every field is validated. Never rejects. */

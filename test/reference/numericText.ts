@@ -8,7 +8,7 @@ import { type ComplexBall, enclose, real } from '../../src/rigorous/index.ts';
 const NAMES: Readonly<Record<string, string>> = {
   log: 'log', exp: 'exp', sin: 'sin', cos: 'cos', tan: 'tan', sinh: 'sinh', cosh: 'cosh', tanh: 'tanh', asin: 'asin', acos: 'acos', atan: 'atan',
   asinh: 'asinh', acosh: 'acosh', atanh: 'atanh', gamma: 'gamma', loggamma: 'logGamma', stieltjes: 'stieltjes', fabs: 'abs', sign: 'sign',
-  besselj: 'besselJ', bessely: 'besselY', besseli: 'besselI', besselk: 'besselK', erf: 'erf', ellipk: 'ellipticKParameter', ellipe: 'ellipticEParameter',
+  besselj: 'besselJ', bessely: 'besselY', besseli: 'besselI', besselk: 'besselK', erf: 'erf', polylog: 'polylog', airyai: 'airyAi', airybi: 'airyBi', ei: 'expIntegralEi', erfc: 'erfc', beta: 'beta', hyp2f1: 'hypergeometric2F1', ellipk: 'ellipticKParameter', ellipe: 'ellipticEParameter',
 };
 const CONSTANTS: Readonly<Record<string, Expression>> = {
   pi: build.constant('pi'), euler: build.constant('eulerGamma'), catalan: build.constant('catalan'), glaisher: build.constant('glaisher'), I: build.constant('i'),
@@ -66,6 +66,7 @@ export function readNumericText(text: string): Expression {
     if (token === 'sqrt') return build.squareRoot(first);
     if (token === 'zeta') return second ? build.call('hurwitzZeta', first, second) : build.call('zeta', first);
     if (token === 'psi' || token === 'polygamma') return build.call('polygamma', first, second ?? first);
+    if (token === 'lambertw') return build.call('lambertW', second ?? build.number(0), first);
     if (token === 'digamma') return build.call('digamma', first);
     const id = NAMES[token];
     if (id === undefined) throw new Error(`the name ${token} is not known here`);

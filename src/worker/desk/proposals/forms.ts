@@ -1,5 +1,5 @@
 /** An exact form in place of the expression, in the document's own language, with the lines that its file needs. */
-import { libraryPrefix } from '../../../engine/insertion.ts';
+import { libraryPrefix } from '../../../engine.ts';
 import { readPlain } from '../../../read/index.ts';
 import { codeLanguage, toCode, toLatex } from '../../../write/index.ts';
 import type { FormsRequest, Proposal } from '../types.ts';

@@ -430,7 +430,7 @@ export class Page implements vscode.Disposable {
       code: document ? isCode(engineLanguage(document)) : false,
       pinned: this.#pinned,
       stale: this.#stale,
-      actions: this.#proposals.map((proposal) => ({ label: buttonLabel(proposal), title: proposalTitle(proposal) })),
+      actions: this.#proposals.map((proposal) => ({ label: this.#mode !== 'expand' && proposal.kind !== 'corrections' && document ? vscode.l10n.t('Replace in {0}', document.uri.path.split('/').at(-1) ?? '') : buttonLabel(proposal), title: proposalTitle(proposal) })),
       history: this.#history.slice(1).map(({ label, detail }) => ({ label, detail })),
     };
     const message: ToPage = { kind: 'state', state, kept: this.kept };

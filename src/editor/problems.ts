@@ -18,13 +18,20 @@ export interface Checked {
   readonly findings: readonly Finding[];
 }
 
+/** The check under way of a document; there is at most one. */
+interface Running {
+  readonly abort: AbortController;
+  readonly version: number;
+  readonly answer: Promise<CheckAnswer | null>;
+}
+
 export class Problems implements vscode.Disposable {
   readonly #services: Services;
   readonly #collection = vscode.languages.createDiagnosticCollection('leadingOrder');
   readonly #checked = new Map<string, Checked>();
   readonly #schedule: CheckSchedule<vscode.TextDocument>;
   readonly #saved = new WeakSet<vscode.TextDocument>();
-  readonly #running = new Map<string, AbortController>();
+  readonly #running = new Map<string, Running>();
   readonly #listeners: vscode.Disposable;
 
   constructor(services: Services) {
@@ -33,7 +40,7 @@ export class Problems implements vscode.Disposable {
       // The offset of the end is kept by the editor; the text would have to be put together.
       sizeOf: (document) => (document.isClosed ? 0 : document.offsetAt(document.lineAt(document.lineCount - 1).range.end)),
       begin: (document) => this.#begin(document),
-      withdraw: (document) => this.#running.get(document.uri.toString())?.abort(),
+      withdraw: (document) => this.#running.get(document.uri.toString())?.abort.abort(),
     });
     this.#listeners = vscode.Disposable.from(
       vscode.workspace.onDidOpenTextDocument((document) => this.#soon(document)),
@@ -51,12 +58,21 @@ export class Problems implements vscode.Disposable {
   }
 
   /** Checks now, whatever the settings say. Null where the text changed under the check or the check failed. */
-  async check(document: vscode.TextDocument): Promise<CheckAnswer | null> {
+  check(document: vscode.TextDocument): Promise<CheckAnswer | null> {
     const key = document.uri.toString();
-    this.#running.get(key)?.abort();
-    const abort = new AbortController();
-    this.#running.set(key, abort);
     const { version } = document;
+    const running = this.#running.get(key);
+    if (running && running.version === version && !running.abort.signal.aborted) return running.answer;
+    running?.abort.abort();
+    const abort = new AbortController();
+    const answer = this.#checkNow(document, version, abort).finally(() => {
+      if (this.#running.get(key)?.abort === abort) this.#running.delete(key);
+    });
+    this.#running.set(key, { abort, version, answer });
+    return answer;
+  }
+
+  async #checkNow(document: vscode.TextDocument, version: number, abort: AbortController): Promise<CheckAnswer | null> {
     const language = engineLanguage(document);
     const text = document.getText();
     const settings = settingsFor(document);
@@ -66,7 +82,6 @@ export class Problems implements vscode.Disposable {
     const notes = abort.signal.aborted ? null : await this.#services.client.consult({ desk: 'notes', text, language }, abort.signal);
     const read = notes && 'notes' in notes ? notes.notes : [];
     const against = abort.signal.aborted ? [] : await checkImplementations(this.#services, document, read, abort.signal);
-    if (this.#running.get(key) === abort) this.#running.delete(key);
     if (abort.signal.aborted || document.isClosed || document.version !== version) return null;
     const unreadable = read.filter((note) => note.problem !== null);
     const others = [...unreadable.map((note) => noteProblem(document, note)), ...against];
@@ -75,7 +90,7 @@ export class Problems implements vscode.Disposable {
       this.#collection.set(document.uri, others);
       return null;
     }
-    this.#checked.set(key, { version, findings: answer.findings });
+    this.#checked.set(document.uri.toString(), { version, findings: answer.findings });
     this.#collection.set(document.uri, [...answer.findings.flatMap((finding) => claimProblem(document, finding, settings)), ...others]);
     this.#services.status.count(document.uri, countsOf(answer));
     return answer;
@@ -85,7 +100,7 @@ export class Problems implements vscode.Disposable {
     this.#listeners.dispose();
     this.#collection.dispose();
     this.#schedule.dispose();
-    for (const abort of this.#running.values()) abort.abort();
+    for (const { abort } of this.#running.values()) abort.abort();
   }
 
   /** Opened or saved. */

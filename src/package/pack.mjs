@@ -10,6 +10,6 @@ const run = (args) => {
   if (status !== 0) process.exit(status ?? 1);
 };
 run(['esbuild.config.mjs']);
-run(['node_modules/@vscode/vsce/vsce', 'package', '--no-dependencies', '--allow-missing-repository', '--out', 'leading-order.vsix']);
+run(['node_modules/@vscode/vsce/vsce', 'package', '--no-dependencies', '--allow-missing-repository', '--no-rewrite-relative-links', '--out', 'leading-order.vsix']);
 const packed = spawnSync('npm', ['pack'], { cwd: root, stdio: 'inherit', shell: process.platform === 'win32' });
 process.exitCode = packed.status ?? 1;

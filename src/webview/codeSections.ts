@@ -1,6 +1,7 @@
 /** The forms for programs: a polynomial in place of a call, and a guarded form of what cancels. */
 import { codeControls } from './controls.ts';
 import { type Child, h } from './dom.ts';
+import { shortened } from './figures.ts';
 import { t } from './language.ts';
 import type { CodeControls, Shown } from './messages.ts';
 
@@ -24,6 +25,7 @@ export function fitSection(shown: Fitted, into: HTMLElement, settle: (controls: 
       'div',
       { class: 'facts', 'aria-live': 'polite' },
       h('p', {}, t('degree', answer.degree), answer.taylorDegree !== null && h('span', { class: 'muted' }, `; ${t('taylor', answer.taylorDegree)}`)),
+      allowance(bound.total, bound.measure === shown.controls.measure ? shown.controls.tolerance : '', bound.measure === 'ulp' ? ' ulp' : ''),
       answer.operations && h('p', { class: 'muted' }, t('operations', answer.operations.multiplications, answer.operations.additions)),
     ),
     into,
@@ -46,19 +48,34 @@ export function guardSection(shown: Guarded, into: HTMLElement, settle: (control
   if (!answer.ok) return [controls, complaint(answer.error.message)];
   return [
     controls,
-    h('div', { class: 'facts', 'aria-live': 'polite' }, h('p', {}, h('span', { class: 'muted' }, `${t('worst')} `), h('strong', {}, answer.bound.whole)), answer.switch !== null && h('p', {}, t('switch', answer.switch))),
+    h('div', { class: 'facts', 'aria-live': 'polite' }, h('p', {}, h('span', { class: 'muted' }, `${t('worst')} `), h('strong', {}, answer.bound.whole), answer.interval && h('span', { class: 'muted' }, ` ${t('onInterval', ...answer.interval)}${answer.format ? `, ${answer.format}` : ''}`)), answer.switch !== null && h('p', {}, t('switch', brief(answer.switch)))),
     into,
     answer.ranges.length > 0 &&
       h(
         'section',
         {},
         h('h2', {}, t('ranges')),
-        h('table', { class: 'figures' }, h('thead', {}, h('tr', {}, ...[t('from'), t('to'), t('form'), t('worst')].map((name) => h('th', { scope: 'col' }, name)))), h('tbody', {}, ...answer.ranges.map((range) => h('tr', {}, h('td', {}, range.from), h('td', {}, range.to), h('td', {}, h('code', {}, range.form)), h('td', {}, range.bound))))),
+        h('table', { class: 'figures' }, h('thead', {}, h('tr', {}, ...[t('from'), t('to'), t('form'), t('worst')].map((name) => h('th', { scope: 'col' }, name)))), h('tbody', {}, ...answer.ranges.map((range) => h('tr', {}, h('td', { title: range.from }, brief(range.from)), h('td', { title: range.to }, brief(range.to)), h('td', {}, h('code', {}, range.form)), h('td', {}, range.bound))))),
       ),
-    answer.forms.length > 0 && h('section', {}, h('h2', {}, t('forms')), h('table', { class: 'figures' }, h('tbody', {}, ...answer.forms.map((form) => h('tr', {}, h('td', {}, h('code', {}, form.text)), h('td', {}, form.bound)))))),
+    answer.forms.length > 0 && h('section', {}, h('h2', {}, t('forms')), h('table', { class: 'figures' }, h('tbody', {}, ...answer.forms.map((form) => h('tr', {}, h('td', {}, h('code', {}, form.text), ...(form.identities ?? []).map((identity) => h('div', { class: 'muted' }, identity))), h('td', {}, form.bound)))))),
     code(answer.code),
     assumptions(answer.assumptions),
   ];
+}
+
+/** The proven error as a part of what was allowed. */
+function allowance(total: string, allowed: string, unit: string): Child {
+  const [used, whole] = [Number(total), Number(allowed)];
+  if (!(used >= 0) || !(whole > 0) || !Number.isFinite(whole)) return null;
+  const said = t('allowance', `${shortened(total, 'above')}${unit}`, `${allowed}${unit}`);
+  return h('p', {}, h('meter', { min: 0, max: whole, value: used, 'aria-label': said }), ` ${said}`);
+}
+
+/** A long end of a range as shown; its exact value is in the title. */
+function brief(end: string): string {
+  const sign = end.startsWith('-') ? '-' : '';
+  const size = end.slice(sign.length);
+  return size.length > 10 ? `${sign}${shortened(size, 'below', 6)}` : end;
 }
 
 const complaint = (message: string): HTMLElement => h('p', { class: 'caution message', role: 'status' }, message);

@@ -95,6 +95,8 @@ export const WORDS = {
   form: 'form',
   switch: 'The series takes over below {0}.',
   worst: 'worst relative error',
+  onInterval: 'on [{0}, {1}]',
+  allowance: 'proven error {0} of {1} allowed',
   operations: '{0} multiplications, {1} additions',
   claims: 'Claims',
   all: 'all',

@@ -1,4 +1,4 @@
-// Pictures of the four main scenes in four themes, from the real workbench, for README and walkthrough: media/scenes/<scene>-<theme>.png and media/walkthrough/<scene>.png.
+// Pictures of the four main scenes in four themes, from the real workbench, for README and walkthrough: media/scenes/<scene>-<theme>.png and media/walkthrough/<scene>.png; high contrast into .cache/scenes.
 // `node test/host/screenshots.mjs [scene ...]`
 import { spawnSync } from 'node:child_process';
 import { copyFileSync, mkdirSync, readFileSync } from 'node:fs';
@@ -14,6 +14,7 @@ const DEMO = path.join(ROOT, 'media/demo');
 const NOTE = readFileSync(path.join(DEMO, 'sag-note.tex'), 'utf8');
 const SAG = '\\frac{\\cosh u - 1}{u}';
 const THEMES = { dark: 'Default Dark Modern', light: 'Default Light Modern', 'high-contrast-dark': 'Default High Contrast', 'high-contrast-light': 'Default High Contrast Light' };
+const KEPT = { dark: true, light: true };
 const WALKTHROUGH = { hover: 'hover', page: 'page', fixes: 'insert', problems: 'check' };
 
 const SCENES = {
@@ -81,7 +82,7 @@ if (!browser) {
   process.exit(1);
 }
 const wanted = process.argv.slice(2);
-for (const folder of ['media/scenes', 'media/walkthrough']) mkdirSync(path.join(ROOT, folder), { recursive: true });
+for (const folder of ['media/scenes', 'media/walkthrough', '.cache/scenes']) mkdirSync(path.join(ROOT, folder), { recursive: true });
 let failed = 0;
 for (const [theme, name] of Object.entries(THEMES)) {
   const settings = { 'workbench.colorTheme': name, 'editor.hover.delay': 50, 'editor.fontSize': 14, 'breadcrumbs.enabled': false, 'workbench.layoutControl.enabled': false, 'editor.lightbulb.enabled': 'off', 'workbench.reduceMotion': 'on' };
@@ -93,7 +94,8 @@ for (const [theme, name] of Object.entries(THEMES)) {
     if (wanted.length > 0 && !wanted.includes(scene)) continue;
     try {
       const clip = await stage(page);
-      const file = path.join(ROOT, 'media/scenes', `${scene}-${theme}.png`);
+      // High contrast is only looked at; the pictures that are kept stay below 1.5 MB.
+      const file = path.join(ROOT, theme in KEPT ? 'media/scenes' : '.cache/scenes', `${scene}-${theme}.png`);
       await page.screenshot({ path: file, clip });
       if (theme === 'dark') copyFileSync(file, path.join(ROOT, 'media/walkthrough', `${WALKTHROUGH[scene]}.png`));
       process.stdout.write(`${scene}-${theme}.png\n`);

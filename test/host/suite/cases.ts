@@ -347,6 +347,7 @@ export const cases: Readonly<Record<string, () => Promise<void>>> = {
         times.push(performance.now() - began);
       }
       await vscode.commands.executeCommand('workbench.action.revertAndCloseActiveEditor');
+      console.log(`typing, ${language}: ${times.map((time) => time.toFixed(0)).join(' ')}`);
       return times.sort((a, b) => a - b)[10] ?? 0;
     };
     // The editor colours LaTeX at every edit, with or without an extension: the same document with the checks off is the measure.

@@ -161,9 +161,10 @@ export const scenes = {
     holds(/guarded\(double u\)/.test(told) && /sinh/.test(told), `the page shows neither code nor form: ${told}`);
     holds((await frame.evaluate(() => document.querySelectorAll('table.figures tbody tr').length)) >= 3, 'the ranges are missing');
     await frame.locator('#apply-0').click();
-    const text = await waitForText(page, 'return guarded(u);');
-    holds(/double guarded\(double u\)[^]*double sag_ratio/.test(text), 'the guard does not stand before its caller');
-    await undoTo(page, 'return guarded(u);', 'return (cosh(u) - 1.0) / (u * u);');
+    // Only the lines in view are in the page: the guard stands where its caller began.
+    const text = await waitForText(page, 'static inline double guarded(double u)');
+    holds(/swing_correction[^]*double guarded\(double u\)/.test(text), `the guard does not stand before its caller: ${text}`);
+    await undoTo(page, 'static inline double guarded(double u)', 'return (cosh(u) - 1.0) / (u * u);');
     await frame.locator('#mode-expand').click();
   },
 

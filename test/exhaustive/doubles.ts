@@ -1,6 +1,6 @@
 /**
  * Emitted C for binary64 over random doubles, uniform in the interval and uniform in the exponent: the proven bound against the worst error seen.
- * Run: npx esbuild test/exhaustive/doubles.ts --bundle --platform=node --format=esm --outfile=/tmp/doubles.mjs && node /tmp/doubles.mjs [samples]
+ * Run: npx esbuild test/exhaustive/doubles.ts --bundle --platform=node --format=esm --outfile=.cache/doubles.mjs && node .cache/doubles.mjs [samples]
  */
 import { Q } from '../../src/expression/index.ts';
 import { compileAndRun } from './compile.ts';

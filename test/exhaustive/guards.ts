@@ -1,6 +1,6 @@
 /**
  * Emitted guards in C for binary32 over every float of each interval, with and without contraction: the proven bound against the worst error seen.
- * Run: npx esbuild test/exhaustive/guards.ts --bundle --platform=node --format=esm --outfile=/tmp/guards.mjs && node /tmp/guards.mjs [step [first [last]]]
+ * Run: npx esbuild test/exhaustive/guards.ts --bundle --platform=node --format=esm --outfile=.cache/guards.mjs && node .cache/guards.mjs [step [first [last]]]
  */
 import { compileAndRun } from './compile.ts';
 import { guardHarness, guardOf, GUARDS } from './guardPrograms.ts';

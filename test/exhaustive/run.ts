@@ -1,6 +1,6 @@
 /**
  * Emitted C for binary32 over every float of each interval, with and without contraction: the proven bound against the worst error seen.
- * Run: npx esbuild test/exhaustive/run.ts --bundle --platform=node --format=esm --outfile=/tmp/exhaustive.mjs && node /tmp/exhaustive.mjs [step]
+ * Run: npx esbuild test/exhaustive/run.ts --bundle --platform=node --format=esm --outfile=.cache/exhaustive.mjs && node .cache/exhaustive.mjs [step]
  */
 import { compileAndRun } from './compile.ts';
 import { CASES, fitOf, harness } from './programs.ts';

@@ -274,7 +274,7 @@ function argumentOfTangent(ctx: Context, a: Element): Element | null {
 const isNumber = (ctx: Context, a: Element): boolean => rationalOf(a) !== null || isNumericAlgebraic(ctx, a);
 function arcHyperbolicSine(ctx: Context, a: Element): Element {
   if (isZeroRational(a)) return Q.ZERO;
-  if (isNegativeForm(a)) return negateElement(arcHyperbolicSine(ctx, negateElement(a)));
+  if (isNegativeForm(a) && !mayLieOnCut(ctx, a, 'imaginary')) return negateElement(arcHyperbolicSine(ctx, negateElement(a)));
   if (isNumber(ctx, a)) return logarithm(ctx, plus(ctx, a, sqrt(ctx, plus(ctx, squared(ctx, a), Q.ONE))));
   return opaque(ctx, 'asinh', [a]);
 }

@@ -47,6 +47,8 @@ export function createField(assumptions: readonly Assumption[], budget: Budget, 
     fractionRoots: new Set(),
     call: (id, args) => callFunction(ctx, id, args),
     signOfNumber(a) {
+      // With a parameter the balls only know its samples: no sign follows from them.
+      if (!isConstant(a)) return null;
       const s = constantSign(a);
       return s === POSITIVE ? 1 : s === NEGATIVE ? -1 : null;
     },

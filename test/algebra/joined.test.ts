@@ -153,3 +153,16 @@ describe('conditions of being non-zero', () => {
     expect(f.factorsThatMayVanish(f.fromExpression(e)).map((u) => text(f.toExpression(u))).sort()).toEqual([...expected].sort());
   });
 });
+
+describe('inverse functions of functions of a parameter', () => {
+  // asin(sin x) = x holds only for |x| <= pi/2 (principal values, DLMF 4.23(ii), from memory): a parameter may be anywhere.
+  it.each([
+    ['asin', b.call('sin', s('x'))],
+    ['acos', b.call('cos', s('x'))],
+    ['atan', b.call('tan', s('x'))],
+    ['acos', b.call('sin', sq(s('x')))],
+    ['asin', b.call('cos', b.power(s('x'), 2))],
+  ] as const)('%s of a function is not undone', (inverse, inner) => {
+    expect(simplify(b.call(inverse, inner), positive('x'))).toMatch(/a(sin|cos|tan)/);
+  });
+});

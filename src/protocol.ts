@@ -65,6 +65,8 @@ export interface FitRequest extends CommonRequest {
   readonly pieces?: number | 'auto';
   /** Code as a function (default) or as one expression in the variable. */
   readonly result?: 'function' | 'expression';
+  /** `plot`: samples of the error in the measure. Made only when asked for. */
+  readonly details?: readonly 'plot'[];
 }
 
 export interface GuardRequest extends CommonRequest {
@@ -280,6 +282,27 @@ export interface FitAnswer {
   /** Where the interval was split: the polynomials in ascending order. `coefficients` and `centre` above are then those of the first one, `degree` and `bound` the largest. */
   readonly pieces?: readonly FitPieceAnswer[];
   readonly operations?: { readonly multiplications: number; readonly additions: number; readonly fused: number };
+  readonly plot?: FitPlotAnswer;
+  readonly speed?: FitSpeedAnswer;
+}
+/** For the eye: the error of the polynomial with its rounded coefficients, evaluated exactly, at about 200 arguments. `bound` is the proven one and includes the rounding of the evaluation. */
+export interface FitPlotAnswer {
+  readonly x: readonly number[];
+  /** Signed (polynomial - function) in the unit of `measure`; null where it has no value. */
+  readonly error: readonly (number | null)[];
+  readonly bound: number;
+  /** What was asked for; null where a degree was. */
+  readonly tolerance: number | null;
+  readonly measure: FitMeasure;
+}
+/** An estimate from counted operations, no measurement: costs in units of one dependent multiplication or addition of the format. */
+export interface FitSpeedAnswer {
+  /** Of the emitted code, by its longest chain of dependent operations. */
+  readonly code: number;
+  /** Of the calls and operations that it replaces. */
+  readonly call: number;
+  /** call / code: above 1 the emitted code is expected to be faster. */
+  readonly ratio: number;
 }
 
 export interface GuardAnswer {

@@ -3,6 +3,13 @@
  * The conventions (local variable, side, values) are stated in DEVELOPERS.md, "The engine's protocol". Offsets count UTF-16 code units.
  */
 
+/** Another file of the document's project, handed over by the host. */
+export interface CompanionFile {
+  /** Its path, as the host knows it or relative to the document; `/` between folders. */
+  readonly name: string;
+  readonly text: string;
+}
+
 interface CommonRequest {
   readonly id?: string | number;
   /** The text and its VS Code language identifier, or `plain`. */
@@ -22,8 +29,12 @@ interface CommonRequest {
   readonly complex?: boolean;
   readonly assume?: readonly string[];
   readonly budget_ms?: number;
+  /** What becomes of constants that code defines beside the expression (`const double g = 9.81;`): kept as symbols (default) or their values filled in. */
+  readonly constants?: 'symbols' | 'values';
   /** Cursor or selection in `text`, where the text is a whole document and the expression has to be found in it. */
   readonly selection?: { readonly start: number; readonly end: number };
+  /** Files that the document refers to (`companions.ts` names and gathers them): their macros and definitions are known. Later files win, the text itself last. */
+  readonly files?: readonly CompanionFile[];
 }
 
 export type Side = 'both' | 'right' | 'left';
@@ -177,6 +188,8 @@ export interface ExpandAnswer {
   readonly at?: { readonly argument: string; readonly function: string; readonly sum: string; readonly error: string; readonly percent: string | null; /** Enclosures behind the shown digits. */ readonly enclosures?: unknown };
   readonly left?: ExpandAnswer;
   readonly branches?: readonly ExpandAnswer[];
+  /** Of a system of differential equations: all its unknown functions, as LaTeX, with their expansions. */
+  readonly components?: readonly { readonly unknown: string; readonly expansion: ExpandAnswer }[];
   readonly value?: { readonly low: string; readonly high: string };
   /** How the value of a definite integral was enclosed. */
   readonly proof?: readonly string[];
@@ -197,6 +210,14 @@ export interface InsertionAnswer {
   readonly code: { readonly text: string; readonly imports: readonly string[] } | null;
 }
 
+/** A constant that code defines beside the expression, and whether its value was filled in. */
+export interface ConstantAnswer {
+  readonly name: string;
+  /** Plain notation. */
+  readonly value: string;
+  readonly filled: boolean;
+}
+
 export interface ReadingAnswer {
   readonly latex: string;
   readonly start: number;
@@ -208,6 +229,8 @@ export interface ReadingAnswer {
   readonly side: Side;
   /** Other symbols and dimensionless ratios that could be the small quantity. */
   readonly candidates: readonly string[];
+  /** Constants of the code around that stand in the expression. */
+  readonly constants?: readonly ConstantAnswer[];
 }
 
 export interface PlotAnswer {

@@ -1,16 +1,40 @@
 /** Names and what they stand for, as far as the document says. */
-import { type Expression, sameExpression, substitute } from '../expression/index.ts';
+import { type Expression, mapChildren, sameExpression, substitute } from '../expression/index.ts';
+import type { CompanionFile } from '../protocol.ts';
+import type { MacroTable } from '../read/index.ts';
 import { definitionOf, sameName } from './claims.ts';
-import type { FoundFormula } from './formulas.ts';
+import { type FoundFormula, formulasOf } from './formulas.ts';
+import type { CheckMemory } from './memory.ts';
 
 interface Definition {
   readonly at: number;
   readonly name: Expression;
   readonly value: Expression;
 }
-export type Definitions = readonly Definition[];
+export interface Definitions {
+  readonly own: readonly Definition[];
+  /** Those of the files that the document refers to; read when the document itself has none of a name. */
+  readonly elsewhere: () => readonly Definition[];
+}
 
-export function definitionsIn(formulas: readonly FoundFormula[]): Definitions {
+export function definitionsOf(formulas: readonly FoundFormula[], files: readonly CompanionFile[], options: { readonly macros: MacroTable; readonly memory?: CheckMemory }): Definitions {
+  let read: readonly Definition[] | null = null;
+  return {
+    own: definitionsIn(formulas),
+    elsewhere: () => (read ??= files.flatMap((file) => definitionsIn(formulasOf(file.text, 'latex', { ...options, wanted: maybeDefinition }).found).map((d) => ({ ...d, value: withoutPlaces(d.value) })))),
+  };
+}
+
+/** A short left side before an equals sign. */
+const maybeDefinition = (written: string): boolean => /^[^=]{1,80}=|^[^=]{1,80}\\(?:equiv|coloneqq|triangleq)/.test(written);
+
+/** Places of another file mean nothing in this one. */
+function withoutPlaces(e: Expression): Expression {
+  const { span: _span, ...rest } = mapChildren(e, withoutPlaces);
+  return rest as Expression;
+}
+
+function definitionsIn(formulas: readonly FoundFormula[]): readonly Definition[] {
   const out: Definition[] = [];
   for (const { formula, span } of formulas) {
     for (const e of [formula.expression, ...formula.conditions]) {
@@ -24,7 +48,8 @@ export function definitionsIn(formulas: readonly FoundFormula[]): Definitions {
 /** Values of a name, the nearest definition before the place first. T'(x) is the derivative of T(x); T(2h) is T(h) at 2h. */
 export function resolve(definitions: Definitions, name: Expression, at: number): readonly Expression[] {
   const base: Expression = name.kind === 'apply' ? { ...name, derivatives: name.derivatives.map(() => 0) } : name;
-  const known = definitions.filter((d) => sameName(d.name, base));
+  const own = definitions.own.filter((d) => sameName(d.name, base));
+  const known = own.length > 0 ? own : definitions.elsewhere().filter((d) => sameName(d.name, base)).map((d) => ({ ...d, at: -1 }));
   const before = known.filter((d) => d.at < at).reverse();
   const after = known.filter((d) => d.at >= at);
   return [...before, ...after].map((d) => applied(d, name)).filter((e) => e !== null);

@@ -24,6 +24,8 @@ export interface Place {
   readonly around: Around;
   /** Where the next claim of the text begins: what stands behind that belongs to it. Absent: there is none. */
   readonly until?: number;
+  /** Files that the document refers to and that could not be read. */
+  readonly absent?: readonly string[];
 }
 
 export interface FindingOptions {
@@ -189,7 +191,7 @@ function generalFinding(claim: Claim, f: Expression, general: General, choice: C
     const judgement = judge(f, explicit, claim.relation, choice.setting);
     if (judgement.kind === 'fails') {
       if (!choice.certain && judgement.failure.matched === 0) return 'next';
-      return options.lenient === undefined ? failing({ ...claim, side: explicit }, f, choice.setting, judgement, place) : undecided(claim, place, UNDEFINED_NAME);
+      return options.lenient === undefined ? failing({ ...claim, side: explicit }, f, choice.setting, judgement, place) : undecided(claim, place, `The claim does not hold for the usual meaning of its left side, whose ${notDefined(place)}.`);
     }
   }
   const judged = judgeGeneral(f, claim.side, claim.relation, general, choice.setting);
@@ -200,11 +202,15 @@ function generalFinding(claim: Claim, f: Expression, general: General, choice: C
     case 'undecided':
       return undecided(claim, place, judged.reason);
     case 'fails':
-      if (options.lenient !== undefined || !isTranscendental(f, choice.setting.variable)) return undecided(claim, place, UNDEFINED_NAME);
+      if (options.lenient !== undefined || !isTranscendental(f, choice.setting.variable)) return undecided(claim, place, `The claim does not hold for the usual meaning of its left side, whose ${notDefined(place)}.`);
       return { ...base, ...(judged.place ?? claim.span), verdict: 'fails', severity: 'error', reason: judged.reason };
   }
 }
-const UNDEFINED_NAME = 'The claim does not hold for the usual meaning of its left side, whose definition does not stand in this document.';
+
+const notDefined = ({ absent }: Place): string => `definition does not stand in this document${orIn(absent)}`;
+
+/** Names the files that were not reached. */
+export const orIn = (absent: readonly string[] | undefined): string => (absent?.length ? `; it may stand in ${absent.slice(0, 3).join(', ')}${absent.length > 3 ? ', ...' : ''}, which could not be read` : '');
 
 /** Symbols of the printed side that the function does not hold. */
 function unknownSymbols(f: Expression, side: Expression, setting: Setting): readonly string[] {
@@ -324,7 +330,7 @@ function undecided(claim: Claim, place: Place, reason: string): Finding {
 }
 
 export const unresolved = (claim: Claim, place: Place): Finding =>
-  undecided(claim, place, `The left side ${claim.name ? toPlain(claim.name) : ''} is only a name, and its definition does not stand in this document.`);
+  undecided(claim, place, `The left side ${claim.name ? toPlain(claim.name) : ''} is only a name, and its ${notDefined(place)}.`);
 
 function failing(claim: Claim, f: Expression, setting: Setting, judgement: Extract<Judgement, { kind: 'fails' }>, place: Place): Finding {
   const found = blame(accusedOf(claim, f, setting, judgement, place));

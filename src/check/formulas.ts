@@ -13,6 +13,8 @@ export interface FoundFormula {
 }
 export interface UnreadFormula extends Span {
   readonly reason: string;
+  /** A command or function in it is not known. */
+  readonly unknown?: boolean;
 }
 export interface Formulas {
   readonly found: readonly FoundFormula[];
@@ -21,12 +23,13 @@ export interface Formulas {
 }
 
 /** Formulas in order of appearance. A text without any mathematics marked as such is read as one formula. */
-export function formulasOf(text: string, language: string, options: { readonly fileName?: string; readonly macros?: MacroTable; readonly memory?: CheckMemory }): Formulas {
+export function formulasOf(text: string, language: string, options: { readonly fileName?: string; readonly macros?: MacroTable; readonly memory?: CheckMemory; /** Formulas whose text it refuses are left out. */ readonly wanted?: (written: string) => boolean }): Formulas {
   const content = readDocument(text, language, options);
   const found: FoundFormula[] = [];
   const unread: UnreadFormula[] = [];
   const read = (span: Span, notation: 'latex' | 'plain', inline: boolean, label: string | null, quiet: boolean, source = text): boolean => {
     const written = source.slice(span.start, span.end);
+    if (options.wanted?.(written) === false) return false;
     const key = options.memory ? signatureOf([notation, written, macrosUsed(written, content.macros)]) : '';
     const known = options.memory?.formulas.recall(key, span.start);
     if (known) {
@@ -44,7 +47,7 @@ export function formulasOf(text: string, language: string, options: { readonly f
       found.push({ span, notation, formula: outcome.value, inline, label });
       return true;
     }
-    if (!quiet) unread.push({ start: outcome.error.start ?? span.start, end: Math.max(outcome.error.end ?? span.end, (outcome.error.start ?? span.start) + 1), reason: outcome.error.message });
+    if (!quiet) unread.push({ start: outcome.error.start ?? span.start, end: Math.max(outcome.error.end ?? span.end, (outcome.error.start ?? span.start) + 1), reason: outcome.error.message, ...(outcome.error.code === 'unknown-function' ? { unknown: true } : {}) });
     return false;
   };
   for (const region of content.regions) {

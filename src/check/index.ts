@@ -1,12 +1,13 @@
 /** The door of check/: claims in a document or a single formula, judged. */
 import { build, children, sameExpression, walk, type Assumption, type Expression, type RelationNode } from '../expression/index.ts';
 import { attempt, type Budget, Declined, type Outcome } from '../outcome.ts';
-import type { Finding } from '../protocol.ts';
-import { type MacroTable, readExact, readExpression, readNotes, readVariable, settingsAt } from '../read/index.ts';
+import { missingFiles } from '../companions.ts';
+import type { CompanionFile, Finding } from '../protocol.ts';
+import { macrosOf, readExact, readExpression, readNotes, readVariable, settingsAt } from '../read/index.ts';
 import { branchFindings, type BranchReader } from './branches.ts';
 import { type Claim, claimsOf } from './claims.ts';
-import { type Definitions, definitionsIn, resolve } from './definitions.ts';
-import { findingOf, unresolved, type Place } from './findings.ts';
+import { type Definitions, definitionsOf, resolve } from './definitions.ts';
+import { findingOf, orIn, unresolved, type Place } from './findings.ts';
 import { type FoundFormula, formulasOf } from './formulas.ts';
 import { type CheckMemory, macrosUsed, signatureOf } from './memory.ts';
 import { isGridName } from './normalise.ts';
@@ -29,8 +30,8 @@ export interface CheckParts {
   readonly assumptions?: readonly Assumption[];
   /** Reads the series branches of a program; without it only comments are looked at. */
   readonly code?: BranchReader;
-  /** Macros of files that the document includes. */
-  readonly macros?: MacroTable;
+  /** Files that the document refers to: their macros and definitions are known. */
+  readonly files?: readonly CompanionFile[];
   /** Verdicts of earlier checks; with it only what an edit touches is judged again. */
   readonly memory?: CheckMemory;
 }
@@ -51,11 +52,14 @@ export function check(parts: CheckParts, budget: Budget): Outcome<Checked> {
   return attempt(() => {
     const asked = readAsked(parts, budget);
     const given = parts.of === undefined ? null : readGiven(parts.of, asked.variable);
-    const { found, unread, content } = formulasOf(parts.text, parts.language, parts);
+    const files = parts.files ?? [];
+    const options = { macros: macrosOf(files.map((f) => f.text)), ...(parts.memory ? { memory: parts.memory } : {}), ...(parts.fileName === undefined ? {} : { fileName: parts.fileName }) };
+    const { found, unread, content } = formulasOf(parts.text, parts.language, options);
     const notes = readNotes(parts.text, parts.language, parts.fileName);
-    const definitions = definitionsIn(found);
+    const absent = missingFiles(parts.text, parts.language, files);
+    const definitions = definitionsOf(found, files, options);
     const findings: Finding[] = [];
-    const request = signatureOf([parts.language, asked.variable, asked.point, asked.side, asked.assumptions, parts.of, parts.variable]);
+    const request = signatureOf([parts.language, absent, asked.variable, asked.point, asked.side, asked.assumptions, parts.of, parts.variable]);
     const claims = found.map((formula) => ({ formula, claims: claimsIn(formula, given) }));
     const starts = claims.flatMap((c) => c.claims.filter((claim) => claim.function !== null || hasMarks(claim.side)).map((claim) => claim.span.start)).sort((a, b) => a - b);
     for (const { formula, claims: own } of claims) {
@@ -67,7 +71,7 @@ export function check(parts: CheckParts, budget: Budget): Outcome<Checked> {
       const judgeAll = (time: Budget): readonly Finding[] =>
         own.flatMap((claim) => {
           const until = firstFrom(starts, claim.span.end);
-          const place: Place = { text: parts.text, formula, around, ...(until === null ? {} : { until }) };
+          const place: Place = { text: parts.text, formula, around, absent, ...(until === null ? {} : { until }) };
           const local = withNote({ ...asked, budget: share(time) }, note, parts);
           return withinTime(claim.span, () => checkClaim(claim, given, definitions, local, place));
         });
@@ -84,7 +88,7 @@ export function check(parts: CheckParts, budget: Budget): Outcome<Checked> {
       const key = (): string => signatureOf([request, note, branch, parts.text.slice(start, end + REACH)]);
       findings.push(...remembered(parts.memory, key, start, budget, judgeBranch));
     }
-    return { findings: findings.sort((a, b) => a.claim.start - b.claim.start || a.start - b.start), unread };
+    return { findings: findings.sort((a, b) => a.claim.start - b.claim.start || a.start - b.start), unread: unread.map(({ start, end, reason, unknown }) => ({ start, end, reason: unknown && absent.length > 0 ? `${reason.replace(/\.$/, '')}${orIn(absent)}.` : reason })) };
   });
 }
 

@@ -1,6 +1,6 @@
 /** The documents and sources below the operands, .gitignore respected. */
 import { readFile, readdir, stat } from 'node:fs/promises';
-import { join, relative, sep } from 'node:path';
+import { dirname, join, relative, resolve, sep } from 'node:path';
 import ignore, { type Ignore } from 'ignore';
 
 const LANGUAGE_BY_ENDING: Readonly<Record<string, string>> = {
@@ -63,27 +63,54 @@ interface Rules {
   readonly rules: Ignore;
 }
 
-const isIgnored = (path: string, isFolder: boolean, stack: readonly Rules[]): boolean =>
-  stack.some(({ folder, rules }) => {
+/** The rules of the deepest folder that say anything about the path decide, as in Git. */
+function isIgnored(path: string, isFolder: boolean, stack: readonly Rules[]): boolean {
+  for (const { folder, rules } of [...stack].reverse()) {
     const inside = relative(folder, path).split(sep).join('/');
-    return inside !== '' && !inside.startsWith('..') && rules.ignores(isFolder ? `${inside}/` : inside);
-  });
+    if (inside === '' || inside.startsWith('..')) continue;
+    const said = rules.test(isFolder ? `${inside}/` : inside);
+    if (said.ignored || said.unignored) return said.ignored;
+  }
+  return false;
+}
 
-async function rulesOf(folder: string): Promise<readonly Rules[]> {
+async function rulesOf(folder: string, file = '.gitignore'): Promise<readonly Rules[]> {
   try {
-    return [{ folder, rules: ignore().add(await readFile(join(folder, '.gitignore'), 'utf8')) }];
+    return [{ folder, rules: ignore().add(await readFile(join(folder, file), 'utf8')) }];
   } catch {
     return [];
   }
 }
 
-/** Files named as operands are taken whatever they are called (unknown endings as plain text); folders are searched. Missing operands are listed in `missing`. */
-export async function sourceFiles(operands: readonly string[]): Promise<{ readonly files: readonly SourceFile[]; readonly missing: readonly string[] }> {
+/** Rules of the folders above, up to the root of the repository; none outside of one. */
+async function rulesAbove(folder: string): Promise<readonly Rules[]> {
+  const above: string[] = [];
+  for (let here = resolve(folder); ; here = dirname(here)) {
+    if (await exists(join(here, '.git'))) {
+      const shared = await rulesOf(here, join('.git', 'info', 'exclude'));
+      return [...shared, ...(await Promise.all(above.reverse().map((f) => rulesOf(f)))).flat()];
+    }
+    if (dirname(here) === here) return [];
+    above.push(dirname(here));
+  }
+}
+const exists = (path: string): Promise<boolean> =>
+  stat(path).then(
+    () => true,
+    () => false,
+  );
+
+/** Files named as operands are taken whatever they are called (unknown endings as plain text); folders are searched. Each file once. `missing`: operands that are not there; `unreadable`: folders below them that could not be opened. */
+export async function sourceFiles(operands: readonly string[]): Promise<{ readonly files: readonly SourceFile[]; readonly missing: readonly string[]; readonly unreadable: readonly string[] }> {
   const files: SourceFile[] = [];
   const missing: string[] = [];
+  const unreadable: string[] = [];
   const visit = async (folder: string, above: readonly Rules[]): Promise<void> => {
     const stack = [...above, ...(await rulesOf(folder))];
-    const entries = await readdir(folder, { withFileTypes: true });
+    const entries = await readdir(folder, { withFileTypes: true }).catch(() => {
+      unreadable.push(folder);
+      return [];
+    });
     entries.sort((a, b) => (a.name < b.name ? -1 : 1));
     for (const entry of entries) {
       const path = join(folder, entry.name);
@@ -97,11 +124,16 @@ export async function sourceFiles(operands: readonly string[]): Promise<{ readon
   };
   for (const operand of operands) {
     try {
-      if ((await stat(operand)).isDirectory()) await visit(operand, []);
+      if ((await stat(operand)).isDirectory()) {
+        const above = await rulesAbove(operand);
+        // A folder that is named outright is searched even where Git leaves it out.
+        await visit(operand, isIgnored(operand, true, above) ? [] : above);
+      }
       else files.push({ path: operand, language: languageOfPath(operand) ?? 'plain' });
     } catch {
       missing.push(operand);
     }
   }
-  return { files, missing };
+  const once = new Map(files.map((file) => [resolve(file.path), file]));
+  return { files: [...once.values()], missing, unreadable };
 }

@@ -9,7 +9,7 @@ import type { EngineTools } from './resources.ts';
 export async function askCheck(request: CheckRequest, tools: EngineTools, time: Budget): Promise<Outcome<CheckAnswer>> {
   const assumptions = readAllAssumptions(request.assume);
   if (!assumptions.ok) return assumptions;
-  const { text, language, variable, point, side, of } = request;
+  const { text, language, variable, point, side, of, files } = request;
   if (codeLanguage(language)) {
     try {
       await tools.code.prepare(language);
@@ -28,6 +28,7 @@ export async function askCheck(request: CheckRequest, tools: EngineTools, time: 
       ...(point === undefined ? {} : { point }),
       ...(side === undefined ? {} : { side }),
       ...(of === undefined ? {} : { of }),
+      ...(files === undefined ? {} : { files }),
     },
     time,
   );

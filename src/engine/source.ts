@@ -1,13 +1,15 @@
 /** The formula that a request is about, read from its text in whatever language it stands. */
 import type { Expression } from '../expression/index.ts';
 import { failure, type Outcome, success } from '../outcome.ts';
-import type { ExpandRequest } from '../protocol.ts';
-import { type Candidate, candidates, codeLanguage, type CodeReading, isTruncated, locate, orderTerms, readFormula, readVariable, type Surroundings } from '../read/index.ts';
+import type { ConstantAnswer, ExpandRequest } from '../protocol.ts';
+import { type Candidate, candidates, codeLanguage, type CodeReading, isTruncated, locate, macrosOf, type MacroTable, orderTerms, readFormula, readVariable, type Surroundings } from '../read/index.ts';
 import type { EngineTools } from './resources.ts';
 
 export interface SourceFormula {
   /** The whole chain of relations for a text that is one formula; the expression meant for a place in a document. */
   readonly expression: Expression;
+  /** The whole chain that the expression stands in, where that is more. */
+  readonly formula?: Expression;
   readonly conditions: readonly Expression[];
   /** Canonical name of the symbol to solve for, where the text says so (`y:\ y^3 + y = x`). */
   readonly unknown?: string;
@@ -20,9 +22,11 @@ export interface SourceFormula {
   readonly end: number;
   /** What code around it says: format, scope, constants. */
   readonly code?: CodeReading;
+  /** Constants defined beside it that stand in it, or were filled in. */
+  readonly constants?: readonly ConstantAnswer[];
 }
 
-export type SourceRequest = Pick<ExpandRequest, 'text' | 'language' | 'selection' | 'variable' | 'unknown'>;
+export type SourceRequest = Pick<ExpandRequest, 'text' | 'language' | 'selection' | 'variable' | 'unknown' | 'files'>;
 
 export async function sourceFormula(request: SourceRequest, tools: EngineTools): Promise<Outcome<SourceFormula>> {
   const { text, language, selection } = request;
@@ -43,6 +47,8 @@ const truncatedSides = (formula: Expression): readonly Expression[] => (formula.
 /** Names of the request that the reader must take as quantities. */
 const namedSymbols = ({ variable, unknown }: SourceRequest): string[] => [variable, unknown].filter((s): s is string => s !== undefined && /^\\?[A-Za-z]+\w*$/.test(s));
 
+const macrosIn = ({ files }: SourceRequest): MacroTable => macrosOf((files ?? []).map((f) => f.text));
+
 const symbolReader =
   (language: string, { code }: EngineTools) =>
   (name: string): Outcome<Expression> => {
@@ -61,11 +67,12 @@ function wholeCode(text: string, language: string, tools: EngineTools): Outcome<
 function placeInDocument(request: SourceRequest, selection: { readonly start: number; readonly end: number }, tools: EngineTools): Outcome<SourceFormula> {
   const { text, language } = request;
   const symbols = namedSymbols(request);
-  const found = locate(text, language, selection, { codeReader: tools.code, ...(symbols.length > 0 ? { symbols } : {}) });
+  const found = locate(text, language, selection, { codeReader: tools.code, macros: macrosIn(request), ...(symbols.length > 0 ? { symbols } : {}) });
   if (!found.ok) return found;
   const { expression, start, end, context } = found.value;
   return success({
     expression,
+    formula: context.formula,
     conditions: context.conditions,
     ...(context.unknown === null ? {} : { unknown: context.unknown }),
     surroundings: { orders: context.orders, conditions: context.conditions, expansions: truncatedSides(context.formula), before: context.before, after: context.after },
@@ -79,7 +86,7 @@ function placeInDocument(request: SourceRequest, selection: { readonly start: nu
 function wholeFormula(request: SourceRequest): Outcome<SourceFormula> {
   const { text, language } = request;
   const symbols = namedSymbols(request);
-  const formula = readFormula(text, language === 'plain' ? 'plain' : 'latex', { symbols });
+  const formula = readFormula(text, language === 'plain' ? 'plain' : 'latex', { symbols, macros: macrosIn(request) });
   if (!formula.ok) return formula;
   const { expression, conditions, unknown } = formula.value;
   return success({

@@ -2,6 +2,9 @@
 import { failure, type Outcome, success } from '../outcome.ts';
 import type { Request } from '../protocol.ts';
 
+/** Longest text that is looked at, in UTF-16 code units. */
+const LONGEST_TEXT = 20_000_000;
+
 type Check = (value: unknown) => string | null;
 
 const text: Check = (v) => (typeof v === 'string' ? null : 'must be a text');
@@ -23,6 +26,11 @@ const selection: Check = (v) => {
   const { start, end } = v as { readonly start?: unknown; readonly end?: unknown };
   return Number.isInteger(start) && Number.isInteger(end) && (start as number) >= 0 && (end as number) >= (start as number) ? null : 'must hold whole numbers 0 <= start <= end';
 };
+const isText = (v: unknown): v is string => typeof v === 'string';
+const fileList: Check = (v) => {
+  if (!Array.isArray(v) || !v.every((f) => typeof f === 'object' && f !== null && isText((f as { readonly name?: unknown }).name) && isText((f as { readonly text?: unknown }).text))) return 'must be a list of files with name and text';
+  return (v as readonly { readonly text: string }[]).reduce((sum, f) => sum + f.text.length, 0) <= LONGEST_TEXT ? null : 'holds more than 20 million characters';
+};
 const identifier: Check = (v) => (typeof v === 'string' || typeof v === 'number' ? null : 'must be a text or a number');
 
 const COMMON: Readonly<Record<string, Check>> = {
@@ -38,8 +46,10 @@ const COMMON: Readonly<Record<string, Check>> = {
   near: numberOrText,
   complex: flag,
   assume: texts,
+  constants: oneOf('symbols', 'values'),
   budget_ms: count(1, 3_600_000),
   selection,
+  files: fileList,
 };
 const MEASURE = oneOf('absolute', 'relative');
 const SPECIFIC: Readonly<Record<Request['ask'], Readonly<Record<string, Check>>>> = {
@@ -68,9 +78,6 @@ const SPECIFIC: Readonly<Record<Request['ask'], Readonly<Record<string, Check>>>
   },
   check: { of: text },
 };
-/** Longest text that is looked at, in UTF-16 code units. */
-const LONGEST_TEXT = 20_000_000;
-
 export function validateRequest(value: unknown): Outcome<Request> {
   if (typeof value !== 'object' || value === null || Array.isArray(value)) return failure('bad-request', 'A request is one JSON object.');
   const record = value as Readonly<Record<string, unknown>>;

@@ -57,6 +57,9 @@ function argumentAt(text: string, from: number): { body: string; end: number } |
   return match ? { body: match[0], end: at + match[0].length } : null;
 }
 
+/** Macros of several files, later ones winning. */
+export const macrosOf = (texts: readonly string[]): MacroTable => texts.reduce<MacroTable>((known, text) => collectMacros(text, known), NO_MACROS);
+
 /** Every macro the text defines; later definitions replace earlier ones. `inherited` are known already (and are what \let may copy). Linear in the text. */
 export function collectMacros(text: string, inherited: MacroTable = NO_MACROS): MacroTable {
   if (!/\\(?:def|gdef|let|Declare|(?:re|provide)?newcommand|providecommand|renewcommand)/.test(text)) return inherited;

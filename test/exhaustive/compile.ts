@@ -32,3 +32,27 @@ export function compileAndRun(compiler: 'gcc' | 'g++', source: string, flags: re
     return execFileSync(program, { encoding: 'utf8' }).trim();
   });
 }
+
+/** Standard output of a C program of several sources, each compiled with its own flags. */
+export function runUnits(units: readonly { readonly source: string; readonly flags: readonly string[] }[]): string {
+  return inFolder((folder) => {
+    const objects = units.map(({ source, flags }, k) => {
+      const [file, object] = [join(folder, `unit${k}.c`), join(folder, `unit${k}.o`)];
+      writeFileSync(file, source);
+      execFileSync('gcc', ['-c', file, '-o', object, ...flags], { stdio: ['ignore', 'ignore', 'inherit'] });
+      return object;
+    });
+    const program = join(folder, 'program');
+    execFileSync('gcc', [...objects, '-o', program, '-lm'], { stdio: ['ignore', 'ignore', 'inherit'] });
+    return execFileSync(program, { encoding: 'utf8' }).trim();
+  });
+}
+
+/** Whether the machine multiplies and adds with one rounding in hardware. */
+export function hasFma(): boolean {
+  try {
+    return / __FMA__ /.test(execFileSync('gcc', ['-march=native', '-dM', '-E', '-x', 'c', '/dev/null'], { encoding: 'utf8' }));
+  } catch {
+    return false;
+  }
+}

@@ -1,7 +1,8 @@
 /** Guards: proven bounds held by compiled code, forms found, switches, requests through the engine. */
 import { describe, expect, it } from 'vitest';
-import { compileAndRun, has } from '../exhaustive/compile.ts';
-import { guardHarness, guardOf, GUARDS } from '../exhaustive/guardPrograms.ts';
+import { has, hasFma } from '../exhaustive/compile.ts';
+import { overFloats } from '../exhaustive/everyFloat.ts';
+import { guardOf, guardRunOf, GUARDS } from '../exhaustive/guardPrograms.ts';
 import { Q } from '../../src/expression/index.ts';
 import { guard, polynomialReport } from '../../src/guard/index.ts';
 import { formatByName } from '../../src/fit/index.ts';
@@ -16,12 +17,10 @@ if (!gcc) console.warn('gcc is absent: emitted C is not run');
 describe('emitted guards over floats of the whole interval (every 400 009th; test/exhaustive/guards.ts runs all)', () => {
   it.skipIf(!gcc).each(GUARDS.filter((_, k) => [0, 1, 4, 5, 7, 9, 11].includes(k)))('$text', (c) => {
     const found = guardOf(c);
-    for (const flags of [['-ffp-contract=off'], ['-ffp-contract=fast', '-mfma']]) {
-      const [worst = NaN, , count = 0] = compileAndRun('gcc', guardHarness(c, found, 400_009), ['-O2', '-Wno-unused-function', ...flags]).split(' ').map(Number);
-      expect(count).toBeGreaterThan(30);
-      expect(worst).toBeGreaterThan(0);
-      expect(worst).toBeLessThanOrEqual(found.bound.whole);
-    }
+    const { worst, floats } = overFloats(guardRunOf(c, found), 400_009, hasFma());
+    expect(floats).toBeGreaterThan(30);
+    expect(worst).toBeGreaterThan(0);
+    expect(worst).toBeLessThanOrEqual(found.bound.whole);
   });
 });
 

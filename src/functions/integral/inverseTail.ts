@@ -40,7 +40,7 @@ function substituted(c: (k: number) => Rational, w: Series): Series {
 const logarithm = (k: number): Rational => (k === 0 ? Q.ZERO : Q.rational(k % 2 === 1 ? 1 : -1, k));
 
 /** Coefficients of log S(w), S = sum of (-1)^k (1/2)_k w^k, from S' = S (log S)'. */
-const logTail: readonly Rational[] = (() => {
+function logTail(): readonly Rational[] {
   const s = Array.from({ length: ORDERS + 1 }, (_, k) => Q.multiply(Q.rational(k % 2 === 0 ? 1 : -1), risingFactorial(Q.HALF, k)));
   const out: Rational[] = [Q.ZERO];
   for (let n = 1; n <= ORDERS; n++) {
@@ -49,24 +49,29 @@ const logTail: readonly Rational[] = (() => {
     out.push(Q.divide(total, Q.rational(n)));
   }
   return out;
-})();
+}
 
 /** W with y^2 = L(1 + W): W = -sigma (lambda + log(1+W)/2 - log S(sigma/(1+W))), lambda = log(pi L)/2; each round fixes one more order. */
-const solution: Series = (() => {
+function solve(): Series {
+  const logS = logTail();
   let w: Series = series(() => constant(Q.ZERO));
   const lambda: Series = series((n) => (n === 0 ? [Q.ZERO, Q.ONE] : constant(Q.ZERO)));
   for (let round = 0; round <= ORDERS; round++) {
     const inverse = substituted((k) => Q.rational(k % 2 === 0 ? 1 : -1), w);
-    const tail = substituted((k) => logTail[k] ?? Q.ZERO, shift(inverse));
+    const tail = substituted((k) => logS[k] ?? Q.ZERO, shift(inverse));
     const inner = addSeries(addSeries(lambda, scaleSeries(substituted(logarithm, w), Q.HALF)), scaleSeries(tail, Q.MINUS_ONE));
     w = scaleSeries(shift(inner), Q.MINUS_ONE);
   }
   return w;
-})();
+}
+
+/** Solved when first asked for: a tenth of a second that no other function should wait for. */
+let solution: Series | undefined;
 
 /** inverfc of exp(-L) for large L. */
 export function inverseTail(L: Expression): Expression {
   const lambda = times(half, log(times(pi, L)));
+  solution ??= solve();
   const terms = solution.slice(1).flatMap((p, i) => p.flatMap((c, j) => (Q.isZero(c) ? [] : [times(c, over(pow(lambda, j), pow(L, i + 1)))])));
   return times(sqrt(L), sqrt(plus(1, ...terms, bigO(pow(over(log(L), L), ORDERS + 1)))));
 }

@@ -27,3 +27,11 @@ double rope_length(double u)
     // leading-order: implements eq:length
     return 1.0 + u * u / 6.0 + u * u * u * u / 120.0;
 }
+
+/* Way of the cabin in the first moments after the brake lets go, air drag taken in. */
+static const double gravity = 9.81;
+double way(double t)
+{
+    // leading-order: small t, on 0 <= t <= 0.1, within 1e-4
+    return log(cosh(gravity * t)) / gravity;
+}

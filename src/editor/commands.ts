@@ -44,6 +44,7 @@ const COMMANDS = {
   showLog: async (room) => room.services.log.show(),
   // Behind links and menus only.
   oneTermMore: (room, link, terms) => onTarget(link, ({ document, place }) => room.pages.show(document, place, 'expand', typeof terms === 'number' ? { terms } : {})),
+  fillInConstants: (room, link, variable) => onTarget(link, ({ document, place }) => room.pages.show(document, place, 'expand', { constants: 'values', ...(typeof variable === 'string' ? { variable } : {}) })),
   applyProposal: (room, link, kind) => onTarget(link, (target) => applyProposal(room, target, String(kind), link)),
 } as const satisfies Readonly<Record<string, Handler>>;
 

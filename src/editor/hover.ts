@@ -1,7 +1,7 @@
 /** The hover: what is expanded and why, one line of Unicode, a small table, the typeset formula, and links. */
 import * as vscode from 'vscode';
 import type { ExpandAnswer } from '../protocol.ts';
-import { shortened } from '../webview/figures.ts';
+import { constantsText, shortened } from '../webview/figures.ts';
 import type { Place } from '../worker/desk/types.ts';
 import { type Consultation, selectionOf } from './consultant.ts';
 import { rangeOf } from './edits.ts';
@@ -55,7 +55,7 @@ function stillComputing(document: vscode.TextDocument, place: Place): vscode.Mar
   return text;
 }
 
-const COMMANDS = ['leadingOrder.expandHere', 'leadingOrder.setSmallQuantity', 'leadingOrder.oneTermMore', 'leadingOrder.applyProposal', 'leadingOrder.addNote'];
+const COMMANDS = ['leadingOrder.expandHere', 'leadingOrder.setSmallQuantity', 'leadingOrder.oneTermMore', 'leadingOrder.fillInConstants', 'leadingOrder.applyProposal', 'leadingOrder.addNote'];
 function trusted(): vscode.MarkdownString {
   const text = new vscode.MarkdownString();
   text.isTrusted = { enabledCommands: COMMANDS };
@@ -152,11 +152,18 @@ function links(link: PlaceLink, answer: ExpandAnswer): string {
   return [
     commandLink(vscode.l10n.t('Insert'), 'leadingOrder.applyProposal', [link, 'after']),
     answer.exact ? '' : commandLink(vscode.l10n.t('one term more'), 'leadingOrder.oneTermMore', [link, answer.terms.length + 1]),
+    constantsLink(link, answer),
     commandLink(vscode.l10n.t('Expansion page'), 'leadingOrder.expandHere', [link]),
     commandLink(vscode.l10n.t('add a note'), 'leadingOrder.addNote', [link]),
   ]
     .filter(Boolean)
     .join(' · ');
+}
+
+/** Constants that the code defines beside the expression stand as symbols; the link puts their values in. */
+function constantsLink(link: PlaceLink, { reading }: ExpandAnswer): string {
+  const kept = reading?.constants?.filter(({ filled }) => !filled) ?? [];
+  return kept.length === 0 ? '' : commandLink(vscode.l10n.t('fill in {0}', constantsText(kept)), 'leadingOrder.fillInConstants', [link, reading?.variable]);
 }
 
 /** Ink by the kind of theme: an image cannot see the theme's colours. */

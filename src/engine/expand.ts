@@ -8,12 +8,13 @@ import { readAllAssumptions } from './assumptions.ts';
 import { withBounds } from './bounds.ts';
 import { expansionAnswer } from './expansionAnswer.ts';
 import { targetOf } from './conditions.ts';
+import { filledConstants, sourceOf } from './constants.ts';
 import { equationOf, functionOf, pointOf, questionOf, readPoint, variableOf } from './question.ts';
 import { insertionAnswer } from './insertion.ts';
 import { integralAnswer } from './integralValue.ts';
 import { readingAnswer } from './reading.ts';
 import type { EngineTools } from './resources.ts';
-import { candidatesOf, type SourceFormula, sourceFormula } from './source.ts';
+import { candidatesOf, type SourceFormula } from './source.ts';
 
 const DEFAULT_TERMS = 4;
 
@@ -93,13 +94,14 @@ function rootOf(request: ExpandRequest, source: SourceFormula, run: Run, time: B
 }
 
 export async function askExpand(request: ExpandRequest, tools: EngineTools, time: Budget): Promise<Outcome<ExpandAnswer>> {
-  const source = await sourceFormula(request, tools);
+  const source = await sourceOf(request, tools, 'symbols');
   if (!source.ok) return source;
   const value = integralAnswer(functionOf(source.value.expression), request, time);
   if (value) return value;
   const expander = expanderOf(request, source.value, time);
   if (!expander.ok) return placed(expander.error, request, source.value);
-  const answer = expansionAnswer(expander.value.first);
+  const found = expansionAnswer(expander.value.first);
+  const answer = { ...found, assumptions: [...filledConstants(source.value), ...found.assumptions] };
   const reading = request.details?.includes('reading') ? { reading: readingAnswer(request, source.value, expander.value.first) } : {};
   const place = { document: request.text, language: request.language, expression: request.text.slice(source.value.start, source.value.end) };
   const insertion = request.details?.includes('insertion') ? { insertion: insertionAnswer(expander.value.first, place) } : {};

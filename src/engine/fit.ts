@@ -9,9 +9,10 @@ import type { CoefficientAnswer, ExpandRequest, FitAnswer, FitPieceAnswer, FitRe
 import { codeLanguage as isCode, readExact } from '../read/index.ts';
 import { encloseReal, rationalOf, real } from '../rigorous/index.ts';
 import { hexFloat, shortestDecimal, toPlain } from '../write/index.ts';
+import { filledConstants, sourceOf } from './constants.ts';
 import { functionOf, variableOf } from './question.ts';
 import type { EngineTools } from './resources.ts';
-import { type SourceFormula, sourceFormula } from './source.ts';
+import type { SourceFormula } from './source.ts';
 
 const DEFAULT_LANGUAGE = 'c';
 /** Bits of an interval end that is no rational number; it is moved outward by its last one. */
@@ -21,7 +22,7 @@ const DIGITS = 6;
 const COMPARISON_MS = 1500;
 
 export async function askFit(request: FitRequest, tools: EngineTools, time: Budget): Promise<Outcome<FitAnswer>> {
-  const source = await sourceFormula(request, tools);
+  const source = await sourceOf(request, tools, 'values');
   if (!source.ok) return source;
   const target = functionOf(source.value.expression);
   const variable = variableIn(request, target, source.value);
@@ -30,7 +31,7 @@ export async function askFit(request: FitRequest, tools: EngineTools, time: Budg
   if (!problem.ok) return problem;
   const found = fit(problem.value, time);
   if (!found.ok) return found;
-  return success(answerOf(found.value, problem.value, request, time));
+  return success(answerOf(found.value, problem.value, request, filledConstants(source.value), time));
 }
 
 function variableIn(request: FitRequest, target: Expression, source: SourceFormula): Outcome<string> {
@@ -108,7 +109,7 @@ function integerHex(value: Rational, fractionBits: number): string {
   return `${scaled < 0n ? '-' : ''}0x${(scaled < 0n ? -scaled : scaled).toString(16)}`;
 }
 
-function answerOf(found: Fit, problem: FitProblem, request: FitRequest, time: Budget): FitAnswer {
+function answerOf(found: Fit, problem: FitProblem, request: FitRequest, constants: readonly string[], time: Budget): FitAnswer {
   const { error } = found;
   return {
     ok: true,
@@ -126,7 +127,7 @@ function answerOf(found: Fit, problem: FitProblem, request: FitRequest, time: Bu
     code: found.code.code,
     imports: found.code.imports,
     taylorDegree: taylorDegree(found, problem, request, time),
-    assumptions: found.assumptions,
+    assumptions: [...constants, ...found.assumptions],
     operations: countOperations(found.program),
     ...centreOf(found.centre, found.format),
     ...(found.denominator ? { denominator: coefficients(found.denominator, found.format) } : {}),

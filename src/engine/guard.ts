@@ -8,17 +8,18 @@ import type { ExpandRequest, GuardAnswer, GuardRequest } from '../protocol.ts';
 import { codeLanguage as isCode, readExact } from '../read/index.ts';
 import { encloseReal, rationalOf, real } from '../rigorous/index.ts';
 import { codeLanguage, shortestDecimal, toPlain } from '../write/index.ts';
+import { filledConstants, sourceOf } from './constants.ts';
 import { libraryPrefix } from './insertion.ts';
 import { functionOf, type Point, readPoint, variableOf } from './question.ts';
 import type { EngineTools } from './resources.ts';
-import { type SourceFormula, sourceFormula } from './source.ts';
+import type { SourceFormula } from './source.ts';
 
 const DEFAULT_LANGUAGE = 'c';
 /** Bits of an interval end that is no rational number; it is moved outward by its last one. */
 const END_BITS = 192;
 
 export async function askGuard(request: GuardRequest, tools: EngineTools, time: Budget): Promise<Outcome<GuardAnswer>> {
-  const source = await sourceFormula(request, tools);
+  const source = await sourceOf(request, tools, 'values');
   if (!source.ok) return source;
   const target = functionOf(source.value.expression);
   const place = placeOf(request, target, source.value);
@@ -26,7 +27,9 @@ export async function askGuard(request: GuardRequest, tools: EngineTools, time: 
   const problem = problemOf(request, target, place.value, source.value);
   if (!problem.ok) return problem;
   const found = guard(problem.value, time);
-  return found.ok ? success(answerOf(found.value, problem.value)) : found;
+  if (!found.ok) return found;
+  const answer = answerOf(found.value, problem.value);
+  return success({ ...answer, assumptions: [...filledConstants(source.value), ...answer.assumptions] });
 }
 
 function placeOf(request: GuardRequest, target: Expression, source: SourceFormula): Outcome<{ readonly variable: string; readonly point: Rational | 'inf' | '-inf' }> {

@@ -18,5 +18,6 @@ export function readingAnswer(request: ExpandRequest, source: SourceFormula, exp
     pointLatex: pointText(toLatex, '\\infty'),
     side: expansion.side,
     candidates: candidatesOf(source, expansion.function).list.map((c) => c.name),
+    ...(source.constants ? { constants: source.constants } : {}),
   };
 }

@@ -1,6 +1,8 @@
 /** The controls above the result. A value is sent when it is settled (Enter, change of focus, choice), never while typing. */
 import type { Question } from '../worker/desk/types.ts';
+import type { ConstantAnswer } from '../protocol.ts';
 import { type Child, h } from './dom.ts';
+import { constantsText } from './figures.ts';
 import { t } from './language.ts';
 import type { CodeControls, Origins } from './messages.ts';
 
@@ -34,6 +36,7 @@ export interface ExpandValues {
   readonly point: string;
   readonly candidates: readonly string[];
   readonly termCount: number;
+  readonly constants: readonly ConstantAnswer[];
 }
 
 export function expandControls(values: ExpandValues, choose: (question: Question) => void): HTMLElement {
@@ -83,7 +86,15 @@ export function expandControls(values: ExpandValues, choose: (question: Question
       ], (measure) => choose({ measure })),
     ),
     termStepper(values.termCount, (terms) => choose({ terms }), origins.terms),
+    values.constants.length > 0 && constantsChoice(values, choose),
   );
+}
+
+/** Constants that the code defines beside the expression: symbols, or their values. The quantity is said too, so that filling in cannot change it. */
+function constantsChoice({ constants, variable, asked }: ExpandValues, choose: (question: Question) => void): HTMLElement {
+  const box = h('input', { type: 'checkbox', id: 'constants', checked: constants.some(({ filled }) => filled) });
+  box.addEventListener('change', () => choose({ constants: box.checked ? 'values' : 'symbols', ...(asked.small ? {} : { variable }) }));
+  return h('div', { class: 'field check' }, h('label', { for: 'constants' }, box, ' ', t('fillIn', constantsText(constants))));
 }
 
 function termStepper(count: number, settle: (terms: number) => void, origin: string | undefined): HTMLElement {

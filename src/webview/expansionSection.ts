@@ -26,6 +26,7 @@ export function expansionSection(shown: Expanded, into: HTMLElement, width: numb
         point: asked.point ?? reading?.point ?? '0',
         candidates: reading?.candidates ?? [],
         termCount: answer.terms.length,
+        constants: reading?.constants ?? [],
       },
       choose,
     ),

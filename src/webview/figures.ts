@@ -31,3 +31,11 @@ function plain(significant: string, power: number): string {
   const rest = significant.slice(power + 1);
   return rest === '' ? whole : `${whole}.${rest}`;
 }
+
+const CONSTANTS_SHOWN = 3;
+
+/** `g = 9.81, l = 2*g`: the first few, then how many more. */
+export function constantsText(constants: readonly { readonly name: string; readonly value: string }[]): string {
+  const shown = constants.slice(0, CONSTANTS_SHOWN).map(({ name, value }) => `${name} = ${value}`);
+  return `${shown.join(', ')}${constants.length > CONSTANTS_SHOWN ? ` (+${constants.length - CONSTANTS_SHOWN})` : ''}`;
+}

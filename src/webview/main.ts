@@ -108,7 +108,7 @@ function failure(message: string, candidates: readonly string[], asked: Question
   return [
     h('p', { class: 'caution message', role: 'status', id: 'failure' }, message),
     candidates.length > 1 && h('div', { class: 'candidates', role: 'group', 'aria-label': t('notSure') }, h('span', {}, t('notSure')), ...candidates.map((candidate, i) => h('button', { type: 'button', id: `candidate-${i}`, on: { click: () => choose({ variable: candidate }) } }, candidate))),
-    expandControls({ asked, origins: {}, variable: asked.variable ?? '', point: asked.point ?? '0', candidates, termCount: asked.terms ?? 4 }, choose),
+    expandControls({ asked, origins: {}, variable: asked.variable ?? '', point: asked.point ?? '0', candidates, termCount: asked.terms ?? 4, constants: [] }, choose),
   ];
 }
 

@@ -24,6 +24,7 @@ export const WORDS = {
   terms: 'terms',
   fewer: 'One term fewer',
   more: 'One term more',
+  fillIn: 'fill in {0}',
   order: 'order',
   bound: 'proven bound',
   boundOn: 'proven bound on [{0}, {1}]',

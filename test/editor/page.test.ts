@@ -3,7 +3,7 @@ import { describe, expect, it } from 'vitest';
 import { splitInterval } from '../../src/editor/interval.ts';
 import { escapeMarkdown, table } from '../../src/editor/markdown.ts';
 import { requestCommand } from '../../src/editor/requestCommand.ts';
-import { shortened } from '../../src/webview/figures.ts';
+import { constantsText, shortened } from '../../src/webview/figures.ts';
 import { decades, errors, ordinate, pathThrough, powerOfTen, ticks, validity } from '../../src/webview/plotMath.ts';
 
 describe('plots', () => {
@@ -37,6 +37,12 @@ describe('figures', () => {
     ['0', 'above', '0'],
     ['sqrt(2)', 'above', 'sqrt(2)'],
   ] as const)('%s from %s is %s', (decimal, side, expected) => expect(shortened(decimal, side)).toBe(expected));
+});
+
+describe('constants of the code', () => {
+  const named = ['a', 'b', 'c', 'd'].map((name, i) => ({ name, value: String(i) }));
+  it('names the first few', () => expect(constantsText(named)).toBe('a = 0, b = 1, c = 2 (+1)'));
+  it('names one', () => expect(constantsText(named.slice(0, 1))).toBe('a = 0'));
 });
 
 describe('text', () => {

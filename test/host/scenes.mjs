@@ -133,6 +133,22 @@ export const scenes = {
     await waitForText(page, 'return sqrt(1.0 + slope * slope)');
   },
 
+  'C: a constant of the file stays a symbol, and is filled in through the hover': async (page) => {
+    await focusEditor(page);
+    await select(page, source('controller.c'), 'log(cosh(gravity * t))');
+    const text = await hoverAtCursor(page, 'gravity²');
+    holds(/fill in gravity = 9\.81/.test(text), `the link is missing in ${text}`);
+    await page.locator('.monaco-hover:visible a', { hasText: 'fill in gravity' }).first().click();
+    const frame = await expansionFrame(page, '#constants');
+    const label = () => frame.evaluate(() => document.getElementById('formula')?.getAttribute('aria-label') ?? '');
+    await frame.waitForFunction(() => document.getElementById('constants')?.checked === true, null, { timeout: 15_000 });
+    holds(/962361\/20000|962361t²\/20000/.test(await label()) && !(await label()).includes('gravity'), `the page reads ${await label()}`);
+    await pageSays(frame, 'gravity = 9.81');
+    await frame.locator('#constants').click();
+    await frame.waitForFunction(() => document.getElementById('formula')?.getAttribute('aria-label')?.includes('gravity') === true, null, { timeout: 15_000 });
+    await focusEditor(page);
+  },
+
   'C: a call is replaced by a fitted polynomial through the page': async (page) => {
     await select(page, source('controller.c'), 'sinf(angle)');
     await runCommand(page, 'Leading Order: Replace Call by Polynomial');

@@ -98,6 +98,9 @@ export class CodeReader {
       return success(this.#reading(found.value.code, found.value.meaning, true, text, table.value, context));
     }
     if (start >= end) return failure('unreadable', 'Nothing is selected; select an expression.', selection);
+    const selected = text.slice(start, end);
+    if (cutsWord(text, start) || cutsWord(text, end)) return failure('unreadable', 'The selection ends inside a name or number; select all of it.', { start, end });
+    if (!/[\p{L}\p{N}_$]/u.test(selected)) return failure('unreadable', 'The selected code is no expression; select one.', { start, end });
     const node = nodeExactly(program.root, start, end);
     const value = node ? valueOf(node) : null;
     if (value) {
@@ -219,6 +222,9 @@ function readWhole(code: Code, { environment, scope }: Context): Meaning {
   if (meaning.type.pending && goal?.kind !== 'float') throw new Declined('bad-request', 'Only integer literals are divided here, and the type around them decides whether the fraction is dropped; make one of them a floating-point number.', { start: code.start, end: code.end });
   return meaning;
 }
+
+/** Whether the place lies between two characters of one name or number. */
+const cutsWord = (text: string, place: number): boolean => /^[\p{L}\p{N}_$]{2}$/u.test(text.slice(place - 1, place + 1)) && place > 0;
 
 /** The selection without white space around it, and without a closing semicolon. */
 function trimmed(text: string, selection: Span): Span {

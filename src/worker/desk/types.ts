@@ -17,6 +17,8 @@ export interface Question {
   readonly measure?: Measure;
   readonly assume?: readonly string[];
   readonly at?: string;
+  /** Constants that code defines beside the expression: symbols, or filled in. */
+  readonly constants?: 'symbols' | 'values';
 }
 
 /** Where a part of the question came from, strongest first. `text`: the formula leaves no choice. `default`: the tool's own. */

@@ -12,7 +12,7 @@ async function api(): Promise<Api> {
   return extension.activate();
 }
 
-const COMMANDS = ['expandHere', 'replaceCall', 'guard', 'libraryFunction', 'testHarness', 'checkDocument', 'checkWorkspace', 'copyQuery', 'addNote', 'setSmallQuantity', 'forgetAnswers', 'openBeside', 'showLog'];
+const COMMANDS = ['expandHere', 'replaceCall', 'guard', 'libraryFunction', 'testHarness', 'checkDocument', 'checkWorkspace', 'copyQuery', 'addNote', 'setSmallQuantity', 'forgetAnswers', 'openBeside', 'showLog', 'fillInConstants'];
 
 export const cases: Readonly<Record<string, () => Promise<void>>> = {
   'activates quickly and registers its commands': async () => {
@@ -37,6 +37,15 @@ export const cases: Readonly<Record<string, () => Promise<void>>> = {
     check(text.includes('from the note above'), `the source is missing: ${text.slice(0, 300)}`);
     check(text.includes('O\\(x⁸\\)'), `the order is missing: ${text.slice(0, 400)}`);
     check(text.includes('command:leadingOrder.setSmallQuantity'), 'the change link is missing');
+  },
+
+  'hover in C: a constant beside the expression can be filled in': async () => {
+    const editor = await open('c', 'const double g = 9.81;\ndouble f(double t)\n{\n    // leading-order: small t\n    return cosh(g * t);\n}\n');
+    const text = await until('a hover', async () => {
+      const found = await hoverText(editor.document, new vscode.Position(4, 13));
+      return found.includes('g²') ? found : null;
+    });
+    check(text.includes('command:leadingOrder.fillInConstants') && text.includes('g = 9.81'), `the link is missing: ${text.slice(0, 900)}`);
   },
 
   'hover picture is one SVG image': async () => {

@@ -1,0 +1,57 @@
+/** Constants that code defines beside an expression (`const double g = 9.81;`): symbols as they stand, or their values filled in. */
+import { build, dependsOn, type Expression, freeSymbols, substitute } from '../expression/index.ts';
+import { type Outcome, success } from '../outcome.ts';
+import type { ConstantAnswer, ExpandRequest } from '../protocol.ts';
+import { rationalOf } from '../rigorous/index.ts';
+import { toPlain } from '../write/index.ts';
+import type { EngineTools } from './resources.ts';
+import { candidatesOf, type SourceFormula, sourceFormula, type SourceRequest } from './source.ts';
+
+type ConstantsRequest = SourceRequest & Pick<ExpandRequest, 'small' | 'constants'>;
+
+interface Value {
+  readonly name: string;
+  readonly value: Expression;
+}
+
+/** The constants that the expression holds, each with its value free of other constants, in order of definition. The quantity asked about is none of them. */
+function constantsIn(source: SourceFormula, request: ConstantsRequest): readonly Value[] {
+  const known: Value[] = [];
+  for (const { name, value } of source.code?.constants ?? []) known.push({ name, value: filledIn(value, known) });
+  const used = known.filter(({ name }) => dependsOn(source.expression, name));
+  const asked = [request.variable, request.unknown, ...(request.small ?? [])].flatMap((text) => {
+    const quantity = text === undefined ? null : source.readSymbol(text);
+    return quantity?.ok ? freeSymbols(quantity.value) : [];
+  });
+  if (asked.length > 0) return used.filter(({ name }) => !asked.includes(name));
+  // Something has to stay a symbol: where every symbol has a value, the one that the text shows to vary.
+  if (freeSymbols(source.expression).some((name) => !used.some((constant) => constant.name === name))) return used;
+  const varying = candidatesOf(source, source.expression).found?.variable.expression;
+  return varying ? used.filter(({ name }) => !dependsOn(varying, name)) : [];
+}
+
+const filledIn = (e: Expression, values: readonly Value[]): Expression => values.reduce((tree, { name, value }) => substitute(tree, name, value), e);
+
+/**
+ * The formula of a request, with the constants that code defines beside it kept as symbols or filled in, as the request says;
+ * `byDefault` where it says nothing: a polynomial for a program needs numbers, an expansion does not.
+ */
+export async function sourceOf(request: ConstantsRequest, tools: EngineTools, byDefault: 'symbols' | 'values'): Promise<Outcome<SourceFormula>> {
+  const source = await sourceFormula(request, tools);
+  if (!source.ok) return source;
+  const found = constantsIn(source.value, request);
+  if (found.length === 0) return source;
+  const filled = (request.constants ?? byDefault) === 'values';
+  const constants: readonly ConstantAnswer[] = found.map(({ name, value }) => ({ name, value: written(value), filled }));
+  return success({ ...source.value, constants, ...(filled ? { expression: filledIn(source.value.expression, found) } : {}) });
+}
+
+/** A literal as it stands in the code, anything else in plain notation, fractions reduced. */
+function written(value: Expression): string {
+  if (value.kind === 'number' && value.written !== undefined) return value.written;
+  const exact = rationalOf(value);
+  return toPlain(exact ? build.number(exact) : value);
+}
+
+/** The values filled in, as a result states them: `g = 981/100`. */
+export const filledConstants = ({ constants }: SourceFormula): readonly string[] => (constants ?? []).filter((c) => c.filled).map(({ name, value }) => `${name} = ${value}`);

@@ -1,0 +1,57 @@
+/** Constants that code defines beside an expression: kept as symbols, listed, and filled in on request. Expected values: substitution by hand into the Maclaurin series (DLMF 4.2.19, 4.33.1, 4.33.2). */
+import { describe, expect, it } from 'vitest';
+import { ask } from '../fit/engine.ts';
+
+const C = 'const double g = 9.81;\nconst double l = 2*g;\ndouble f(double t) { return exp(g*t)/l; }\n';
+const at = (text: string, piece: string): { readonly text: string; readonly selection: { readonly start: number; readonly end: number } } => ({ text, selection: { start: text.indexOf(piece), end: text.indexOf(piece) + piece.length } });
+
+async function expanded(request: Readonly<Record<string, unknown>>): Promise<{ readonly coefficients: readonly string[]; readonly constants: unknown; readonly assumptions: readonly string[] }> {
+  const answer = await ask({ ask: 'expand', terms: 2, details: ['reading'], ...request });
+  if (!answer.ok || !('terms' in answer) || !Array.isArray(answer.terms) || !('reading' in answer)) throw new Error(JSON.stringify(answer));
+  return { coefficients: answer.terms.map((t) => t.coefficient), constants: answer.reading?.constants, assumptions: answer.assumptions };
+}
+
+describe('constants of the code around', () => {
+  it('stay symbols and are listed', async () => {
+    const found = await expanded({ language: 'c', variable: 't', ...at(C, 'exp(g*t)/l') });
+    expect(found.coefficients).toEqual(['1/l', 'g/l']);
+    expect(found.constants).toEqual([
+      { name: 'g', value: '9.81', filled: false },
+      { name: 'l', value: '981/50', filled: false },
+    ]);
+    expect(found.assumptions).toEqual([]);
+  });
+  it('are filled in exactly, one through the other, and stated', async () => {
+    const found = await expanded({ language: 'c', constants: 'values', ...at(C, 'exp(g*t)/l') });
+    // e^{gt}/(2g) = 1/(2g) + t/2 + ...; 1/19.62 = 50/981.
+    expect(found.coefficients).toEqual(['50/981', '1/2']);
+    expect(found.assumptions).toContain('g = 9.81');
+  });
+  it('never take the place of the quantity asked about', async () => {
+    const text = 'x = 0.5\nk = 3\nprint(math.sinh(k*x))\n';
+    expect((await expanded({ language: 'python', variable: 'x', constants: 'values', ...at(text, 'math.sinh(k*x)') })).coefficients).toEqual(['3', '9/2']);
+  });
+  it('leave a symbol where every one has a value', async () => {
+    const text = 'x = 0.5\nprint(math.sinh(x))\n';
+    expect((await expanded({ language: 'python', constants: 'values', ...at(text, 'math.sinh(x)') })).coefficients).toEqual(['1', '1/6']);
+  });
+  it('a variable that is assigned again is no constant', async () => {
+    const text = 'double f(double t) { double g = 9.81; g = 2 * g; return exp(g*t); }\n';
+    expect((await expanded({ language: 'c', variable: 't', constants: 'values', ...at(text, 'exp(g*t)') })).coefficients).toEqual(['1', 'g']);
+  });
+  it('a polynomial for a program takes the values', async () => {
+    const answer = await ask({ language: 'c', interval: ['0', '1/10'], tolerance: '1e-4', ...at(C, 'exp(g*t)/l') });
+    expect(answer).toMatchObject({ ok: true, assumptions: expect.arrayContaining(['g = 9.81']) as unknown });
+  });
+  it('cannot be anything else', async () => {
+    expect(await ask({ ask: 'expand', constants: 'numbers', text: 'x' })).toMatchObject({ ok: false, error: { code: 'bad-request' } });
+  });
+});
+
+describe('selections in code', () => {
+  it.each(['*', 'xp(g*t)', 'exp(g*t)/l; '])('%s', async (piece) => {
+    const answer = await ask({ ask: 'expand', variable: 't', language: 'c', ...at(C, piece) });
+    if (piece.startsWith('exp')) expect(answer.ok).toBe(true);
+    else expect(answer).toMatchObject({ ok: false, error: { code: 'unreadable' } });
+  });
+});

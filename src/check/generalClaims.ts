@@ -1,7 +1,7 @@
 /** Claims with a general term: a sum over an index, or a term in n between dots. Refuted by their first terms, confirmed only by proof. */
 import { build, dependsOn, freeSymbols, mapChildren, Q, walk, type Expression, type IndexedNode, type Relation, type Span } from '../expression/index.ts';
 import type { Setting } from './context.ts';
-import { differentiate } from './derivative.ts';
+import { differentiate } from '../functions/index.ts';
 import { replaceNode } from './decimals.ts';
 import { fold, isUndefined } from './fold.ts';
 import { atIndex, generalTermOf, isProved } from './generalTerm.ts';

@@ -6,7 +6,7 @@
 import { createField } from '../algebra/index.ts';
 import { build, dependsOn, Q, substitute, type Expression, type Rational } from '../expression/index.ts';
 import type { Setting } from './context.ts';
-import { differentiate } from './derivative.ts';
+import { differentiate } from '../functions/index.ts';
 import { numberOf } from './size.ts';
 
 /** slope * k + shift. */

@@ -8,6 +8,7 @@ import { readAllAssumptions } from './assumptions.ts';
 import { withBounds } from './bounds.ts';
 import { expansionAnswer } from './expansionAnswer.ts';
 import { targetOf } from './conditions.ts';
+import { differentialQuestion, solverOf } from './differential.ts';
 import { filledConstants, sourceOf } from './constants.ts';
 import { equationOf, functionOf, pointOf, questionOf, readPoint, variableOf } from './question.ts';
 import { insertionAnswer } from './insertion.ts';
@@ -41,6 +42,8 @@ function expanderOf(request: ExpandRequest, source: SourceFormula, time: Budget)
     return success({ first: first.value, withTerms: (terms) => solve({ terms }) });
   };
   if (request.small) return smallOf(request, request.small, source, run, time);
+  const differential = differentialQuestion(request, source);
+  if (differential) return differential.ok ? run(solverOf(differential.value, time)) : differential;
   if (request.unknown !== undefined || (source.unknown !== undefined && source.expression.kind === 'relation')) return rootOf(request, source, run, time);
   const question = questionOf(request, source);
   if (!question.ok) return question;

@@ -2,7 +2,7 @@
 import { build, type Expression } from '../expression/index.ts';
 import type { Expansion, ExpansionTerm } from '../expand/expansion.ts';
 import type { ExpandAnswer, RemainderAnswer, TermAnswer } from '../protocol.ts';
-import { equationLatex, expansionLatex, expansionNumeric, expansionText, remainderLatex, toPlain } from '../write/index.ts';
+import { equationLatex, expansionLatex, expansionNumeric, expansionText, remainderLatex, toLatex, toPlain } from '../write/index.ts';
 
 const isOne = (e: Expression | null): boolean => e === null || build.isOneNumber(e);
 
@@ -43,5 +43,6 @@ export function expansionAnswer(expansion: Expansion): ExpandAnswer {
     assumptions: expansion.assumptions,
     ...(expansion.left ? { left: expansionAnswer(expansion.left) } : {}),
     ...(expansion.branches ? { branches: expansion.branches.map(expansionAnswer) } : {}),
+    ...(expansion.components ? { components: expansion.components.map((c) => ({ unknown: toLatex(c.unknown), expansion: expansionAnswer(c.expansion) })) } : {}),
   };
 }

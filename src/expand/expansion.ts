@@ -49,6 +49,8 @@ export interface Expansion {
   /** The other side, where it differs (this one is then the right side). */
   readonly left?: Expansion;
   readonly branches?: readonly Expansion[];
+  /** Of a system of equations: the expansions of all its unknown functions. */
+  readonly components?: readonly { readonly unknown: Expression; readonly expansion: Expansion }[];
 }
 
 export type { Assumption };

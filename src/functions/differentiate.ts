@@ -1,18 +1,22 @@
-/** Symbolic derivatives, for proofs by differential equations. */
-import { build, dependsOn, Q, type Expression } from '../expression/index.ts';
-import { describe } from '../functions/index.ts';
+/** Symbolic derivatives of trees by the rules of calculus and the derivatives that descriptions state. */
+import { build, type Expression, freeSymbols, Q } from '../expression/index.ts';
+import { describe } from './registry.ts';
 
 const isZero = (e: Expression): boolean => e.kind === 'number' && Q.isZero(e.value);
 const times = (...factors: readonly Expression[]): Expression => (factors.some(isZero) ? build.number(0) : build.product(...factors.filter((f) => !build.isOneNumber(f))));
 const plus = (terms: readonly Expression[]): Expression => build.sum(...terms.filter((t) => !isZero(t)));
 
-/** de/dx; null where a function in it has no derivative in closed form. */
-export function differentiate(e: Expression, name: string): Expression | null {
-  if (!dependsOn(e, name)) return build.number(0);
-  const d = (inner: Expression): Expression | null => differentiate(inner, name);
+/**
+ * de/dx for x of that name; null where a function in it has no derivative in closed form.
+ * `along` gives dv/dx for other symbols that move with x (a total derivative); null for those that do not.
+ */
+export function differentiate(e: Expression, name: string, along: (symbol: string) => Expression | null = () => null): Expression | null {
+  const rate = (symbol: string): Expression | null => (symbol === name ? build.number(1) : along(symbol));
+  if (!freeSymbols(e).some((symbol) => rate(symbol) !== null)) return build.number(0);
+  const d = (inner: Expression): Expression | null => differentiate(inner, name, along);
   switch (e.kind) {
     case 'symbol':
-      return build.number(1);
+      return rate(e.name);
     case 'sum':
       return all(e.terms.map(d), plus);
     case 'negation': {
@@ -62,7 +66,7 @@ export function differentiate(e: Expression, name: string): Expression | null {
     case 'derivative': {
       if (e.variable.kind !== 'symbol' || e.variable.name !== name) return null;
       let inner: Expression | null = e.body;
-      for (let i = 0; i <= e.times && inner; i += 1) inner = differentiate(inner, name);
+      for (let i = 0; i <= e.times && inner; i += 1) inner = d(inner);
       return inner;
     }
     case 'integral':

@@ -1,0 +1,121 @@
+/** Requests whose text is a differential equation: which of its solution's expansions is asked for. */
+import { type Assumption, build, type Expression, freeSymbols, type Rational, walk } from '../expression/index.ts';
+import { type DifferentialStatement, differentialStatement, expandSolution, type Expansion } from '../expand/index.ts';
+import { type Budget, Declined, failure, type Outcome, success } from '../outcome.ts';
+import type { ExpandRequest } from '../protocol.ts';
+import { readAssumption } from '../read/index.ts';
+import { readAllAssumptions } from './assumptions.ts';
+import { statedConditions, withValues } from './conditions.ts';
+import { type Point, readPoint } from './question.ts';
+import type { SourceFormula } from './source.ts';
+
+type Solve = (size: { readonly terms?: number; readonly order?: Rational }) => Outcome<Expansion>;
+
+/** What a differential text asks for. */
+export interface DifferentialQuestion {
+  readonly statement: DifferentialStatement;
+  readonly kind: 'solution' | 'perturbation' | 'in-place';
+  /** The unknown function asked for. */
+  readonly unknown?: string;
+  /** The quantity to expand in, where it is not the independent variable. */
+  readonly variable?: Expression;
+  readonly assumptions: readonly Assumption[];
+  /** Conditions of the text that were used, in plain notation. */
+  readonly stated: readonly string[];
+  readonly point?: Point;
+}
+
+/**
+ * Null where the text holds no differential equation. Three kinds:
+ * - with initial values, or with `unknown`: the solution, in powers of the independent variable, or of another variable that is named (a small parameter);
+ * - without both, and a `variable` that is not the independent one: the equation simplified in place, in that variable (often the unknown function itself);
+ * - with neither and no variable: the solution with free constants, if the equation is linear in its unknown; else in place for a small unknown.
+ */
+export function differentialQuestion(request: ExpandRequest, source: SourceFormula): Outcome<DifferentialQuestion> | null {
+  const pieces = [source.formula ?? source.expression, ...source.conditions];
+  const named = request.variable === undefined ? null : source.readSymbol(request.variable);
+  const variable = named?.ok ? named.value : undefined;
+  const unknownRead = request.unknown === undefined ? null : source.readSymbol(request.unknown);
+  const unknownTree = unknownRead?.ok ? unknownRead.value : null;
+  const unknown = unknownTree?.kind === 'symbol' || unknownTree?.kind === 'apply' ? unknownTree.name : source.unknown;
+  const asked = { ...(unknown === undefined ? {} : { unknown }), ...(variable?.kind === 'symbol' ? { variable: variable.name } : {}) };
+  try {
+    const first = differentialStatement(pieces, asked);
+    if (!first) return null;
+    const split = splitAssumptions(request.assume ?? [], first);
+    if (!split.ok) return split;
+    const whole = split.value.pieces.length > 0 ? differentialStatement([...pieces, ...split.value.pieces], asked) : first;
+    if (!whole) return null;
+    return questionOf(request, whole, { unknown, variable }, split.value.assumptions);
+  } catch (error) {
+    if (error instanceof Declined) return { ok: false, error: error.failure };
+    throw error;
+  }
+}
+
+function questionOf(request: ExpandRequest, whole: DifferentialStatement, asked: { readonly unknown: string | undefined; readonly variable: Expression | undefined }, assumptions: readonly Assumption[]): Outcome<DifferentialQuestion> {
+  const small = asked.variable ?? smallCondition(whole);
+  const isUnknown = small?.kind === 'symbol' && whole.unknowns.some((u) => u.name === small.name);
+  const independent = small === undefined || (small.kind === 'symbol' && small.name === whole.variable);
+  const solving = asked.unknown !== undefined || whole.initial.length > 0;
+  const kind = isUnknown && asked.unknown === undefined ? 'in-place' : solving ? (independent ? 'solution' : 'perturbation') : !independent ? 'in-place' : small === undefined && !isLinear(whole) ? 'in-place' : 'solution';
+  const stated = statedConditions(whole.conditions, build.symbol(whole.variable));
+  const statement: DifferentialStatement = {
+    ...whole,
+    equations: whole.equations.map((e) => withValues(e, stated)),
+    initial: whole.initial.map((v) => ({ ...v, value: withValues(v.value, stated) })),
+  };
+  const point = request.point === undefined ? null : readPoint(request.point);
+  if (point && !point.ok) return point;
+  const [first] = whole.unknowns;
+  const variable = independent && kind === 'in-place' && first ? build.symbol(first.name) : independent ? undefined : small;
+  return success({
+    statement,
+    kind,
+    assumptions: [...assumptions, ...stated.assumptions],
+    stated: stated.used,
+    ...(asked.unknown === undefined ? {} : { unknown: asked.unknown }),
+    ...(variable ? { variable } : {}),
+    ...(point ? { point: point.value } : {}),
+  });
+}
+
+/** `\epsilon \ll 1` or `\epsilon \to 0` beside the equation. */
+function smallCondition(statement: DifferentialStatement): Expression | undefined {
+  for (const condition of statement.conditions) {
+    if (condition.kind !== 'relation' || (condition.relations[0] !== 'll' && condition.relations[0] !== 'to')) continue;
+    const [left] = condition.sides;
+    const bare = left?.kind === 'call' && left.function === 'abs' ? left.args[0] : left;
+    if (bare?.kind === 'symbol' && statement.equations.some((e) => freeSymbols(e).includes(bare.name))) return bare;
+  }
+  return undefined;
+}
+
+/** Whether functions and derivatives stand in sums and products only: nothing is left to be simplified in place. */
+function isLinear(statement: DifferentialStatement): boolean {
+  return statement.equations.every((equation) => [...walk(equation)].every((e) => e.kind !== 'call' || !freeSymbols(e).some((s) => s.includes('~'))));
+}
+
+/** Initial values among the assumptions are part of the problem. */
+function splitAssumptions(texts: readonly string[], statement: DifferentialStatement): Outcome<{ readonly pieces: readonly Expression[]; readonly assumptions: readonly Assumption[] }> {
+  const names = new Set(statement.unknowns.map((u) => u.name));
+  const pieces: Expression[] = [];
+  const others: string[] = [];
+  for (const text of texts) {
+    const read = readAssumption(text);
+    if (!read.ok) return failure('bad-request', `The assumption "${text}" cannot be read: ${read.error.message}`);
+    const values = read.value.flatMap((a): Expression[] => (a.kind === 'relation' && a.relation === '=' ? [{ kind: 'relation', sides: [a.left, a.right], relations: ['='] }] : []));
+    const speaks = values.some((v) => [...walk(v)].some((e) => (e.kind === 'apply' && names.has(e.name)) || (e.kind === 'symbol' && (names.has(e.name) || /^\\d{0,3}dot\{/.test(e.name)))));
+    if (speaks) pieces.push(...values);
+    else others.push(text);
+  }
+  const assumptions = readAllAssumptions(others);
+  return assumptions.ok ? success({ pieces, assumptions: assumptions.value }) : assumptions;
+}
+
+/** Solves the question for a number of terms or an order. */
+export function solverOf(question: DifferentialQuestion, time: Budget): Solve {
+  const { statement, assumptions, stated, unknown, point } = question;
+  const withStated = (outcome: Outcome<Expansion>): Outcome<Expansion> => (outcome.ok && stated.length > 0 ? success({ ...outcome.value, assumptions: [...outcome.value.assumptions, ...stated] }) : outcome);
+  return (size) => withStated(expandSolution({ statement, side: 'both', assumptions, ...(unknown === undefined ? {} : { unknown }), ...(point === undefined ? {} : { point }), ...size }, time));
+}

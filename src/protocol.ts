@@ -318,9 +318,9 @@ export interface FitPlotAnswer {
   readonly tolerance: number | null;
   readonly measure: FitMeasure;
 }
-/** An estimate from counted operations, no measurement: costs in units of one dependent multiplication or addition of the format. */
+/** An estimate from counted operations, no measurement: costs in units of one multiplication of the format. Absent where code is interpreted. */
 export interface FitSpeedAnswer {
-  /** Of the emitted code, by its longest chain of dependent operations. */
+  /** Of the emitted code. */
   readonly code: number;
   /** Of the calls and operations that it replaces. */
   readonly call: number;

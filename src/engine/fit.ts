@@ -2,14 +2,15 @@
 import { termsNeeded } from '../bound/index.ts';
 import { expand } from '../expand/index.ts';
 import { build, type Expression, Q, type Rational } from '../expression/index.ts';
-import { countOperations, type Fit, fit, type FitProblem, type FloatFormat, formatByName } from '../fit/index.ts';
+import { countOperations, estimatedSpeed, type Fit, fit, type FitProblem, type FloatFormat, formatByName } from '../fit/index.ts';
 import { describe } from '../functions/index.ts';
 import { budget, type Budget, failure, type Outcome, success } from '../outcome.ts';
-import type { CoefficientAnswer, ExpandRequest, FitAnswer, FitPieceAnswer, FitRequest } from '../protocol.ts';
+import type { CoefficientAnswer, ExpandRequest, FitAnswer, FitPieceAnswer, FitRequest, FitSpeedAnswer } from '../protocol.ts';
 import { codeLanguage as isCode, readExact } from '../read/index.ts';
 import { encloseReal, rationalOf, real } from '../rigorous/index.ts';
 import { hexFloat, shortestDecimal, toPlain } from '../write/index.ts';
 import { filledConstants, sourceOf } from './constants.ts';
+import { fitPlot } from './fitPlot.ts';
 import { functionOf, variableOf } from './question.ts';
 import type { EngineTools } from './resources.ts';
 import type { SourceFormula } from './source.ts';
@@ -129,6 +130,8 @@ function answerOf(found: Fit, problem: FitProblem, request: FitRequest, constant
     taylorDegree: taylorDegree(found, problem, request, time),
     assumptions: [...constants, ...found.assumptions],
     operations: countOperations(found.program),
+    ...speedOf(found, problem),
+    ...(request.details?.includes('plot') ? { plot: fitPlot(found, problem, time) } : {}),
     ...centreOf(found.centre, found.format),
     ...(found.denominator ? { denominator: coefficients(found.denominator, found.format) } : {}),
     ...(found.pieces ? { pieces: found.pieces.map((piece): FitPieceAnswer => ({ from: endText(piece.low, problem.low, problem, 0), to: endText(piece.high, problem.high, problem, 1), coefficients: coefficients(piece.terms, found.format), degree: piece.degree, bound: up(piece.error.total), ...centreOf(piece.centre, found.format) })) } : {}),
@@ -136,6 +139,11 @@ function answerOf(found: Fit, problem: FitProblem, request: FitRequest, constant
 }
 
 const centreOf = (centre: Rational, format: FitProblem['format']): { readonly centre?: string } => (Q.isZero(centre) ? {} : { centre: format.kind === 'float' ? shortestDecimal(centre, format.name) : up(centre) });
+
+function speedOf({ program, format }: Fit, problem: FitProblem): { readonly speed?: FitSpeedAnswer } {
+  const speed = estimatedSpeed(problem.function, program, format.name, problem.language);
+  return speed ? { speed } : {};
+}
 
 /** A cut as the shortest decimal of its float; an end of the whole interval as it was written. */
 const endText = (end: Rational, whole: Rational, { intervalText, format }: FitProblem, k: 0 | 1): string =>

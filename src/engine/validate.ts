@@ -66,6 +66,7 @@ const SPECIFIC: Readonly<Record<Request['ask'], Readonly<Record<string, Check>>>
     contraction: oneOf('any', 'none', 'fma'),
     method: oneOf('minimax', 'taylor', 'economized', 'rational'),
     result: oneOf('function', 'expression'),
+    details: texts,
     pieces: (v) => (v === 'auto' ? null : count(1, 1000)(v)),
   },
   guard: {

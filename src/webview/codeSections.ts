@@ -26,7 +26,7 @@ export function fitSection(shown: Fitted, into: HTMLElement, settle: (controls: 
       { class: 'facts', 'aria-live': 'polite' },
       h('p', {}, t('degree', answer.degree), answer.taylorDegree !== null && h('span', { class: 'muted' }, `; ${t('taylor', answer.taylorDegree)}`)),
       allowance(bound.total, bound.measure === shown.controls.measure ? shown.controls.tolerance : '', bound.measure === 'ulp' ? ' ulp' : ''),
-      answer.operations && h('p', { class: 'muted' }, t('operations', answer.operations.multiplications, answer.operations.additions)),
+      answer.operations && h('p', { class: 'muted' }, t('operations', answer.operations.multiplications, answer.operations.additions), answer.speed && `; ${t('speed', answer.speed.ratio)}`),
     ),
     into,
     h('section', {}, h('h2', {}, `${t('bound')} (${bound.measure})`), h('table', { class: 'figures' }, h('tbody', {}, ...parts.map(([name, value]) => h('tr', {}, h('th', { scope: 'row' }, name), h('td', {}, value))), h('tr', { class: 'total' }, h('th', { scope: 'row' }, t('total')), h('td', {}, bound.total)))), h('p', { class: 'muted' }, bound.method)),

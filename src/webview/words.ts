@@ -99,6 +99,7 @@ export const WORDS = {
   onInterval: 'on [{0}, {1}]',
   allowance: 'proven error {0} of {1} allowed',
   operations: '{0} multiplications, {1} additions',
+  speed: 'estimated time of the call over that of this code: {0}',
   claims: 'Claims',
   all: 'all',
   holds: 'holds',

@@ -83,3 +83,23 @@ describe('fit', () => {
     }
   });
 });
+
+describe('what a page shows beside the answer', () => {
+  it('samples of the error in ulp, below the proven bound and above a third of the approximation error', async () => {
+    const answer = await fitAnswer({ text: 'exp(x)', interval: ['-7/20', '7/20'], degree: 4, format: 'binary32', measure: 'ulp', details: ['plot'] });
+    const { plot } = answer;
+    if (!plot) throw new Error('no plot');
+    const largest = Math.max(...plot.error.map((e) => Math.abs(e ?? 0)));
+    expect(plot.x).toHaveLength(plot.error.length);
+    expect([plot.x[0], plot.x.at(-1), plot.measure, plot.tolerance]).toEqual([-0.35, 0.35, 'ulp', null]);
+    expect(largest).toBeLessThanOrEqual(plot.bound);
+    expect(largest).toBeGreaterThan(Number(answer.bound.approximation) / 3);
+  });
+  it('an estimate of the speed: more operations cost more; none for interpreted languages', async () => {
+    const [short, long] = [await fitAnswer({ text: 'sin(x)', interval: ['-1', '1'], degree: 3 }), await fitAnswer({ text: 'sin(x)', interval: ['-1', '1'], degree: 13 })];
+    expect(short.speed?.ratio ?? 0).toBeGreaterThan(long.speed?.ratio ?? Infinity);
+    expect(short.speed?.call).toBe(long.speed?.call);
+    expect((await fitAnswer({ text: 'sin(x)', interval: ['-1', '1'], degree: 3, emit: 'python' })).speed).toBeUndefined();
+    expect(short.plot).toBeUndefined();
+  });
+});

@@ -187,7 +187,7 @@ export function createField(assumptions: readonly Assumption[], budget: Budget, 
     return sign;
   }
 
-  for (const a of assumptions) if (a.kind === 'domain') facts.setDomain(a.symbol, a.domain);
+  for (const a of assumptions) if (a.kind === 'domain' && a.domain !== 'operator') facts.setDomain(a.symbol, a.domain);
   for (const a of assumptions) if (a.kind === 'relation') facts.note(field.subtract(field.fromExpression(a.left), field.fromExpression(a.right)), a.relation);
   signs.reset();
   sums.clear();

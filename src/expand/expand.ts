@@ -11,6 +11,7 @@ import { isEvenInRoot } from './even-root.ts';
 import { generalTerm } from './general.ts';
 import { radiusOf } from './radius.ts';
 import { expandSide, type SideResult } from './side.ts';
+import { expandVectors, hasVectors } from './vectors/index.ts';
 
 /**
  * The expansion of problem.function in problem.variable (a symbol, or a quantity like v/c taken as one) at the point, to `terms` terms or to `order`.
@@ -19,9 +20,14 @@ import { expandSide, type SideResult } from './side.ts';
 export function expand(problem: ExpansionProblem, budget: Budget): Outcome<Expansion> {
   return attempt(() => {
     requireShallow(problem.function);
-    if (problem.variable.kind !== 'symbol') return inCompound(problem, (inner) => expandSymbol(inner, budget));
-    return expandSymbol(problem, budget);
+    if (hasVectors(problem.function)) return expandVectors(problem, budget, (inner) => inVariable(inner, budget));
+    return inVariable(problem, budget);
   });
+}
+
+function inVariable(problem: ExpansionProblem, budget: Budget): Expansion {
+  if (problem.variable.kind !== 'symbol') return inCompound(problem, (inner) => expandSymbol(inner, budget));
+  return expandSymbol(problem, budget);
 }
 
 function expandSymbol(problem: ExpansionProblem, budget: Budget): Expansion {

@@ -1,16 +1,17 @@
 /** Several small quantities at once: one bookkeeping parameter s with weights, or one quantity far smaller than the other. */
 import { createField } from '../algebra/index.ts';
-import type { Element } from '../algebra/types.ts';
-import { type Assumption, build, dependsOn, type Expression, Q, substitute } from '../expression/index.ts';
+import { type Assumption, build, type Expression, Q } from '../expression/index.ts';
 import { describe } from '../functions/index.ts';
 import { attempt, type Budget, Declined, type Outcome } from '../outcome.ts';
-import { add, addElements, compareExponents, type Context, exactOf, insertFormal, isRational, monomial, type Multi, scaleBy } from '../series/index.ts';
+import { compareExponents, exactOf, insertFormal, isRational, monomial, type Multi } from '../series/index.ts';
 import { requireShallow } from './depth.ts';
 import { evaluate } from './evaluate.ts';
 import type { Expansion, ExpansionTerm, SmallProblem, SmallQuantity } from './expansion.ts';
-import { factorTree, type RawTerm, rawTerms } from './flatten.ts';
+import { factorTree, rawTerms } from './flatten.ts';
 import { openSession } from './session.ts';
 import { openContext } from './open-side.ts';
+import { expandScaled } from './scaled.ts';
+import { expandSmallVectors, hasVectors } from './vectors/index.ts';
 
 /**
  * Each quantity q becomes point + s^weight q, the function is expanded in s -> 0+, then s = 1: terms are blocks of equal weight, coefficients are homogeneous in the quantities.
@@ -19,35 +20,21 @@ import { openContext } from './open-side.ts';
 export function expandSmall(problem: SmallProblem, budget: Budget): Outcome<Expansion> {
   return attempt(() => {
     requireShallow(problem.function);
-    if (problem.quantities.length === 0 || problem.quantities.some((q) => q.symbol.kind !== 'symbol')) throw new Declined('bad-request', 'Name the small quantities, each by one symbol.');
+    const vectors = hasVectors(problem.function);
+    if (problem.quantities.length === 0 || problem.quantities.some((q) => q.symbol.kind !== 'symbol' && !vectors)) throw new Declined('bad-request', 'Name the small quantities, each by one symbol.');
     if (problem.quantities.some((q) => Q.signOf(q.weight) <= 0)) throw new Declined('bad-request', 'The weight of a small quantity must be positive.');
     if ((problem.terms === undefined) === (problem.order === undefined)) throw new Declined('bad-request', 'Ask for a number of terms or for an order, not both.');
+    if (vectors) return expandSmallVectors(problem, budget);
     return problem.iterated ? iterated(problem, budget) : weighted(problem, budget);
   });
 }
 
-const LOCAL = "s'";
 const nameOf = (q: SmallQuantity): string => (q.symbol.kind === 'symbol' ? q.symbol.name : '');
 const isAtZero = (q: SmallQuantity): boolean => q.point === undefined || (q.point.kind === 'number' && Q.isZero(q.point.value));
 
 function weighted(problem: SmallProblem, budget: Budget): Expansion {
-  const s = build.symbol(LOCAL);
-  const positive: Assumption = { kind: 'relation', left: s, relation: '>', right: build.number(0) };
-  const field = createField([...problem.assumptions, positive], budget, describe);
-  const c = openContext(field, budget, LOCAL, s, build.negation(build.call('log', s)), false);
-  const bindings = new Map<string, Multi>();
-  const offsets = new Map<string, Expression>();
-  for (const q of problem.quantities) {
-    const name = nameOf(q);
-    const offset = isAtZero(q) ? name : `${name}'`;
-    if (!isAtZero(q)) offsets.set(offset, build.difference(q.symbol, q.point as Expression));
-    const moving = scaleBy(c, monomial(c, c.scale.local, q.weight), field.fromExpression(build.symbol(offset)));
-    bindings.set(name, isAtZero(q) ? moving : add(c, field.fromExpression(q.point as Expression), moving));
-  }
-  const series = evaluate(openSession(c, bindings), problem.function);
-  const { blocks, remainder } = takeBlocks(c, series, problem);
-  const back = (e: Expression): Expression => [...offsets].reduce((tree, [name, value]) => substituteSymbol(tree, name, value), e);
-  const terms: ExpansionTerm[] = blocks.map((b) => ({ coefficient: back(exactOf(c, b.coefficient)), power: build.number(0), log: 0, scale: null, weight: exactOf(c, b.power) }));
+  const scaled = problem.quantities.map((q) => ({ name: nameOf(q), weight: q.weight, ...(isAtZero(q) || !q.point ? {} : { point: q.point }) }));
+  const found = expandScaled({ ...problem, scaled }, budget);
   const sizes = problem.quantities.map((q) => {
     const size = build.call('abs', isAtZero(q) ? q.symbol : build.difference(q.symbol, q.point as Expression));
     return Q.isOne(q.weight) ? size : build.power(size, Q.reciprocal(q.weight));
@@ -62,37 +49,10 @@ function weighted(problem: SmallProblem, budget: Budget): Expansion {
     local,
     logarithm: build.call('log', local),
     prefactor: null,
-    terms,
-    remainder: remainder ? { power: exactOf(c, remainder.power), log: remainder.log, scale: null } : null,
-    exact: remainder === null,
-    divergent: c.notes.divergent && remainder !== null,
+    ...found,
+    exact: found.remainder === null,
     oscillating: false,
-    assumptions: [...new Set([...c.notes.assumptions, ...[...field.needed].filter((a) => !a.includes(LOCAL))])],
   };
-}
-
-const substituteSymbol = (e: Expression, name: string, value: Expression): Expression => (dependsOn(e, name) ? substitute(e, name, value) : e);
-
-interface Block {
-  readonly power: Element;
-  readonly coefficient: Element;
-}
-
-/** Terms of equal power of s together; powers of log s vanish at s = 1 and only count in the remainder. */
-function takeBlocks(c: Context, series: Multi, problem: SmallProblem): { blocks: Block[]; remainder: RawTerm | null } {
-  const blocks: Block[] = [];
-  for (const term of rawTerms(c, series)) {
-    if (term.factors.length > 0 || term.oscillation) throw new Declined('no-expansion', 'The function has an essential singularity where the small quantities vanish; expand it in one of them.');
-    const last = blocks[blocks.length - 1];
-    const same = last !== undefined && compareExponents(c, last.power, term.power) === 0;
-    if (term.order) return { blocks, remainder: term };
-    const full = problem.terms !== undefined ? blocks.length >= problem.terms && !same : compareExponents(c, term.power, problem.order ?? Q.ZERO) >= 0;
-    if (full) return { blocks, remainder: term };
-    const coefficient = term.log === 0 ? term.coefficient : Q.ZERO;
-    if (same) blocks[blocks.length - 1] = { power: last.power, coefficient: addElements(c, last.coefficient, coefficient) };
-    else blocks.push({ power: term.power, coefficient });
-  }
-  return { blocks, remainder: null };
 }
 
 /** The first quantity is t; each further one is smaller than every power of it. */

@@ -134,10 +134,14 @@ export interface RelationNode extends Node {
   readonly relations: readonly Relation[];
   readonly relationSpans?: readonly Span[];
 }
-/** |v|, a dot b, bold vectors: kept as written until a vector-aware room reads them. */
+/**
+ * Vectors and operators, kept as written until expand/vectors or expand/noncommuting reads them: a bold letter (`symbol`, its LaTeX in `name`), |v|, a dot b, a cross b, a list of components;
+ * `directional`: args[0] differentiated along each further argument, (a . nabla)(b . nabla) f; `ordered`: a product whose factors keep their order; [A, B] and {A, B}; `trace` and `determinant` of args[0].
+ */
+export type VectorOperation = 'symbol' | 'norm' | 'dot' | 'cross' | 'tuple' | 'directional' | 'ordered' | 'commutator' | 'anticommutator' | 'trace' | 'determinant';
 export interface VectorNode extends Node {
   readonly kind: 'vector';
-  readonly operation: 'symbol' | 'norm' | 'dot' | 'cross' | 'tuple';
+  readonly operation: VectorOperation;
   readonly name?: string;
   readonly args: readonly Expression[];
 }

@@ -1,7 +1,7 @@
 /** An expansion as trees that are ready to be written: its sum, term by term, and its O-term. */
 import { build, mapChildren, Q, sameExpression, walk, type Expression } from '../expression/index.ts';
 import type { Expansion, ExpansionRemainder, ExpansionTerm } from '../expand/expansion.ts';
-import { arrange, commonFraction, factorsOf, type Factors, multiplyFactors, NO_FACTORS, powerFactors, splitSign } from './layout.ts';
+import { arrange, commonFraction, factorsOf, type Factors, multiplyFactors, NO_FACTORS, powerFactors, splitSign, standsBehind } from './layout.ts';
 
 type Placement = 'inside' | 'outside';
 
@@ -80,8 +80,16 @@ export function termTree(expansion: Expansion, term: ExpansionTerm, placement: P
   const monomial = monomialFactors(expansion, term.power, term.log, term.scale);
   const coefficient = coefficientFactors(term.coefficient);
   const onlyCoefficient = monomial.numerator.length + monomial.denominator.length === 0;
-  if (onlyCoefficient && term.coefficient.kind === 'sum') return orderedSum(term.coefficient);
+  if (onlyCoefficient && term.coefficient.kind === 'sum') return orderedSum(term.coefficient.terms.some(standsBehind) ? build.sum(...term.coefficient.terms.map((t) => operatorsLast(factorsOf(t), NO_FACTORS))) : term.coefficient);
+  if (coefficient.numerator.some(standsBehind)) return operatorsLast(coefficient, monomial);
   return arrange(coefficient, monomial, isTall(expansion.local) ? 'outside' : placement);
+}
+
+/** `\frac{\epsilon^2}{2} [A, B]`: scalars with their fraction, then what must keep its place. */
+function operatorsLast(coefficient: Factors, monomial: Factors): Expression {
+  const behind = coefficient.numerator.filter(standsBehind);
+  const scalars = { ...coefficient, numerator: coefficient.numerator.filter((f) => !standsBehind(f)) };
+  return arrange(multiplyFactors(scalars, monomial), { ...NO_FACTORS, numerator: behind }, 'outside');
 }
 
 /** A local variable that holds a fraction (x - pi/4) is not set into another one. */

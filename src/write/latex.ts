@@ -1,6 +1,6 @@
 /** Expression -> LaTeX as an author types it. */
-import { build, Q, PLAIN_STYLE, type DocumentStyle, type Expression, type Relation } from '../expression/index.ts';
-import { splitSign } from './layout.ts';
+import { build, Q, PLAIN_STYLE, type DocumentStyle, type Expression, type Relation, type VectorOperation } from '../expression/index.ts';
+import { runs, splitSign } from './layout.ts';
 import { describe } from './names.ts';
 import { isGreekWord, latexSymbol } from './symbols.ts';
 import { enclosedArguments, isCallShape } from './template.ts';
@@ -197,8 +197,9 @@ class LatexWriter {
     factors.forEach((factor, i) => {
       const last = i === factors.length - 1;
       let inner = this.write(factor);
-      const open = inner.open === true || inner.level === Level.Prefix || (inner.level === Level.Product && factor.kind !== 'product' && factor.kind !== 'quotient');
-      if (inner.level < Level.Product || (open && !last) || (inner.level === Level.Product && (factor.kind === 'quotient' || factor.kind === 'number') && this.style.fraction === 'slash')) {
+      const besideVector = factor.kind === 'vector' && factor.operation === 'dot' && factors.some((f) => f !== factor && (f.kind === 'vector' || (f.kind === 'power' && f.base.kind === 'vector')));
+      const open = besideVector || inner.open === true || inner.level === Level.Prefix || (inner.level === Level.Product && factor.kind !== 'product' && factor.kind !== 'quotient');
+      if (inner.level < Level.Product || (open && !last) || besideVector || (inner.level === Level.Product && (factor.kind === 'quotient' || factor.kind === 'number') && this.style.fraction === 'slash')) {
         inner = factor.kind === 'call' && inner.level === Level.Prefix ? this.call(factor.function, factor.args, true) : this.parenthesised(inner);
       }
       tall ||= inner.tall;
@@ -326,22 +327,47 @@ class LatexWriter {
     return { text: grows ? `${name}\\left(${inner.text}\\right)` : `${name}(${inner.text})`, level: Level.Atom, tall: inner.tall };
   }
 
-  vector(operation: string, name: string | undefined, args: readonly Expression[]): Written {
-    const texts = args.map((a) => this.at(a, Level.Product).text);
+  vector(operation: VectorOperation, name: string | undefined, args: readonly Expression[]): Written {
+    const [first] = args;
+    const list = (): string => args.map((a) => this.write(a).text).join(', ');
     switch (operation) {
       case 'symbol':
-        return atom(`\\mathbf{${name ?? ''}}`);
+        return atom(name?.startsWith('\\') ? name : `\\mathbf{${name ?? ''}}`);
       case 'norm':
-        return atom(`\\left|${args.map((a) => this.write(a).text).join(', ')}\\right|`);
+        return atom(`\\left|${list()}\\right|`);
       case 'dot':
-        return { text: texts.join(' \\cdot '), level: Level.Product, tall: false };
       case 'cross':
-        return { text: texts.join(' \\times '), level: Level.Product, tall: false };
-      default:
-        return atom(`\\left(${args.map((a) => this.write(a).text).join(', ')}\\right)`);
+        return { text: args.map((a) => this.at(a, Level.Power).text).join(operation === 'dot' ? ' \\cdot ' : ' \\times '), level: Level.Product, tall: false };
+      case 'directional': {
+        const along = runs(args.slice(1)).map(({ factor, count }) => ({ text: `${this.at(factor, Level.Power).text} \\cdot \\nabla`, count }));
+        const [only] = along;
+        const operator = along.length === 1 && only?.count === 1 ? only.text : along.map(({ text, count }) => `(${text})${raisedTo(count)}`).join('');
+        return { text: `${operator} ${first ? this.at(first, Level.Power).text : ''}`, level: Level.Product, tall: false };
+      }
+      case 'ordered': {
+        const pieces = runs(args).map(({ factor, count }) => {
+          const inner = this.at(factor, count === 1 ? Level.Power : Level.Atom).text;
+          return /^\S*\^/.test(inner) && count > 1 ? `(${inner})${raisedTo(count)}` : `${inner}${raisedTo(count)}`;
+        });
+        return { text: pieces.reduce(glue, ''), level: pieces.length === 1 ? Level.Power : Level.Product, tall: false };
+      }
+      case 'commutator':
+        return atom(`[${list()}]`);
+      case 'anticommutator':
+        return atom(`\\{${list()}\\}`);
+      case 'trace':
+      case 'determinant': {
+        const sign = operation === 'trace' ? '\\operatorname{tr}' : '\\det';
+        const inner = first ? this.write(first) : atom('');
+        return inner.level === Level.Atom && inner.text.length === 1 ? { text: `${sign} ${inner.text}`, level: Level.Product, tall: false } : { text: `${sign}(${inner.text})`, level: Level.Power, tall: false };
+      }
+      case 'tuple':
+        return atom(`\\left(${list()}\\right)`);
     }
   }
 }
+
+const raisedTo = (count: number): string => (count === 1 ? '' : `^${count < 10 ? count : `{${count}}`}`);
 
 /** Names after which an author leaves the parentheses away, and which take a power before their argument. */
 const BARE_NAMES = /^\\(?:(?:arc)?(?:sin|cos|tan)|cot|sec|csc|(?:sin|cos|tan|cot)h|ln|log|lg|exp|operatorname\{(?:ar[cs]?\w+|sech|csch)\})(?:\^(?:.|\{[^{}]*\}))?$/;

@@ -1,5 +1,5 @@
 /** The arrangement of one term of an expansion as a person writes it: sign in front, one fraction, numbers before constants before symbols, positive powers on their own side of the bar. */
-import { build, Q, type Expression, type Rational } from '../expression/index.ts';
+import { build, Q, sameExpression, type Expression, type Rational } from '../expression/index.ts';
 import { splitExponential } from './exponential.ts';
 
 /** e = sign * coefficient * product of numerator / product of denominator, without changing any value. */
@@ -96,8 +96,38 @@ function raised(f: Expression, n: bigint): Expression {
   return n === 1n ? f : build.power(f, n);
 }
 
+/** Operators and derivatives along a direction, and sums of them: they follow the fraction that multiplies them. */
+export function standsBehind(e: Expression): boolean {
+  switch (e.kind) {
+    case 'vector':
+      return e.operation === 'directional' || e.operation === 'ordered' || e.operation === 'commutator' || e.operation === 'anticommutator';
+    case 'sum':
+      return e.terms.some(standsBehind);
+    case 'product':
+      return e.factors.some(standsBehind);
+    case 'quotient':
+      return standsBehind(e.numerator);
+    case 'negation':
+      return standsBehind(e.operand);
+    default:
+      return false;
+  }
+}
+
+/** Equal neighbours of a product together. */
+export function runs(factors: readonly Expression[]): readonly { readonly factor: Expression; readonly count: number }[] {
+  const found: { factor: Expression; count: number }[] = [];
+  for (const factor of factors) {
+    const last = found[found.length - 1];
+    if (last && sameExpression(last.factor, factor)) last.count += 1;
+    else found.push({ factor, count: 1 });
+  }
+  return found;
+}
+
 /** Where a factor goes in a printed product: numbers, roots of numbers, constants, symbols, then the rest; sums and functions last. */
 function rank(e: Expression): number {
+  if (standsBehind(e) || (e.kind === 'vector' && (e.operation === 'symbol' || e.operation === 'cross'))) return 6;
   const base = e.kind === 'power' && !(e.base.kind === 'constant' && e.base.name === 'e') ? e.base : e;
   switch (base.kind) {
     case 'number':

@@ -1,5 +1,6 @@
 /** Expression -> a Python expression in the names of the mpmath library, for numeric checks. */
 import { Q, type ConstantName, type Expression } from '../expression/index.ts';
+import { toLatex } from './latex.ts';
 import { atom, Binding, enclosed, type Dialect, type Piece, writeLinear } from './linear.ts';
 import { describe } from './names.ts';
 import { RESERVED_NUMERIC } from './reserved.ts';
@@ -103,10 +104,25 @@ function dialect(symbols: NumericSymbols): Dialect {
       case 'relation':
         return { text: e.sides.map((s) => enclosed(write(s), Binding.Sum)).reduce((left, right, i) => `${left} ${pythonRelation(e.relations[i - 1] ?? '=')} ${right}`), binding: Binding.Relation };
       case 'vector':
-        return e.operation === 'symbol' ? atom(symbols.nameOf(e.name ?? 'v')) : atom(`${e.operation}_(${e.args.map(bare).join(', ')})`);
+        return vectorPiece(e, symbols, write);
       default:
         return write(e);
     }
+  }
+}
+
+/** Lengths, dot products and derivatives along directions are quantities with names of their own; products of operators keep their order. */
+function vectorPiece(e: Extract<Expression, { kind: 'vector' }>, symbols: NumericSymbols, write: (e: Expression) => Piece): Piece {
+  const inner = (x: Expression): string => enclosed(write(x), Binding.Power);
+  const [first, second] = e.args;
+  switch (e.operation) {
+    case 'ordered':
+      return { text: e.args.map(inner).join('*'), binding: Binding.Product };
+    case 'commutator':
+    case 'anticommutator':
+      return first && second ? atom(`(${inner(first)}*${inner(second)} ${e.operation === 'commutator' ? '-' : '+'} ${inner(second)}*${inner(first)})`) : atom('0');
+    default:
+      return atom(symbols.nameOf(toLatex(e)));
   }
 }
 

@@ -52,7 +52,9 @@ const PLAIN: Dialect = {
       case 'relation':
         return { text: e.sides.map((s) => enclosed(write(s), Binding.Sum)).reduce((left, right, i) => `${left} ${LINEAR_RELATIONS[e.relations[i - 1] ?? '=']} ${right}`), binding: Binding.Relation };
       case 'vector':
-        return e.operation === 'symbol' ? atom(plainSymbol(e.name ?? 'v')) : atom(`${e.operation}(${list(e.args, write)})`);
+        if (e.operation === 'symbol') return atom(plainSymbol(e.name ?? 'v'));
+        if (e.operation === 'ordered') return { text: e.args.map((a) => enclosed(write(a), Binding.Power)).join('*'), binding: Binding.Product };
+        return atom(`${e.operation}(${list(e.args, write)})`);
       default:
         return write(e);
     }

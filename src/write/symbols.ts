@@ -20,7 +20,8 @@ export function latexSymbol(name: string): string {
 /** One-line Unicode: `\epsilon` -> ϵ, `v_0` -> v₀, `k_B` stays. */
 export function unicodeSymbol(name: string): string {
   const plain = name
-    .replace(/\\(?:mathrm|mathbf|mathit|text|operatorname|hat|bar|tilde|vec|dot)\s*\{([^{}]*)\}/g, '$1')
+    .replace(/\\(?:mathrm|mathbf|boldsymbol|bm|pmb|mathit|text|operatorname|bar|tilde|vec|dot)\s*\{([^{}]*)\}/g, '$1')
+    .replace(/\\(?:wide)?hat\s*\{([^{}]*)\}/g, '$1\u0302')
     .replace(/\\([A-Za-z]+)\s*/g, (whole, word: string) => GREEK[word] ?? word)
     .replace(/\{([^{}]*)\}/g, '$1')
     .replace(/'/g, '′');
@@ -40,7 +41,7 @@ export function superscript(text: string): string | null {
 
 /** A bare identifier for the symbol: letters, digits, underscores, never empty, never starting with a digit. */
 export function identifierOf(name: string): string {
-  const marks = name.replace(/'/g, '_prime').replace(/\\(mathrm|mathbf|mathit|text|operatorname)\s*(?=\{)/g, '');
+  const marks = name.replace(/'/g, '_prime').replace(/\\(?:mathrm|mathbf|mathit|text|operatorname|boldsymbol|bm|vec|pmb)\s*(?=\{)/g, '').replace(/\\cdot(?![A-Za-z])/g, ' dot ').replace(/\\times(?![A-Za-z])/g, ' cross ').replace(/\\(?:left|right)(?![A-Za-z])/g, ' ');
   const words = marks.replace(/\\([A-Za-z]+)/g, ' $1 ').replace(/[^\p{L}\p{N}_]+/gu, ' ').trim();
   const ascii = words.replace(/[^\x20-\x7e]/gu, (sign) => greekWord(sign)).replace(/\s*_\s*/g, '_').replace(/\s+/g, '_');
   const safe = ascii.replace(/[^A-Za-z0-9_]/g, '');

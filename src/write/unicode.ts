@@ -2,6 +2,7 @@
 import { build, Q, type ConstantName, type Expression } from '../expression/index.ts';
 import { atom, Binding, enclosed, type Dialect, type Piece, writeLinear } from './linear.ts';
 import { asPiece } from './mpmath.ts';
+import { runs } from './layout.ts';
 import { describe } from './names.ts';
 import { enclosedArguments } from './template.ts';
 import { superscript, unicodeSymbol } from './symbols.ts';
@@ -97,16 +98,43 @@ const UNICODE: Dialect = {
           binding: Binding.Relation,
         };
       case 'vector':
-        if (e.operation === 'symbol') return atom(unicodeSymbol(e.name ?? 'v'));
-        if (e.operation === 'norm') return atom(`|${list(e.args, write)}|`);
-        if (e.operation === 'dot' || e.operation === 'cross') return { text: e.args.map((a) => enclosed(write(a), Binding.Power)).join(e.operation === 'dot' ? '·' : '×'), binding: Binding.Product };
-        return atom(`(${list(e.args, write)})`);
+        return vectorPiece(e, write);
       default:
         return write(e);
     }
   },
   standsTogether,
 };
+
+function vectorPiece(e: Extract<Expression, { kind: 'vector' }>, write: (e: Expression) => Piece): Piece {
+  const [first] = e.args;
+  const inner = (x: Expression): string => enclosed(write(x), Binding.Power);
+  switch (e.operation) {
+    case 'symbol':
+      return atom(unicodeSymbol(e.name ?? 'v'));
+    case 'norm':
+      return atom(`|${list(e.args, write)}|`);
+    case 'dot':
+    case 'cross':
+      return { text: e.args.map(inner).join(e.operation === 'dot' ? '·' : '×'), binding: Binding.Product };
+    case 'directional':
+      return { text: `${runs(e.args.slice(1)).map(({ factor, count }) => `(${inner(factor)}·∇)${raised(count)}`).join('')}${first ? inner(first) : ''}`, binding: Binding.Power };
+    case 'ordered': {
+      const pieces = runs(e.args).map(({ factor, count }) => (count === 1 ? inner(factor) : `${enclosed(write(factor), Binding.Atom)}${raised(count)}`));
+      return { text: pieces.join(''), binding: Binding.Power };
+    }
+    case 'commutator':
+      return atom(`[${list(e.args, write)}]`);
+    case 'anticommutator':
+      return atom(`{${list(e.args, write)}}`);
+    case 'trace':
+    case 'determinant':
+      return atom(`${e.operation === 'trace' ? 'tr' : 'det'}(${list(e.args, write)})`);
+    case 'tuple':
+      return atom(`(${list(e.args, write)})`);
+  }
+}
+const raised = (count: number): string => (count === 1 ? '' : (superscript(`${count}`) ?? `^${count}`));
 
 function squareRoot(base: Expression, write: (e: Expression) => Piece): Piece {
   const inner = write(base);

@@ -1,7 +1,7 @@
 /** The smallest pieces: numbers, brackets, bars, commands with arguments. */
 import { build, type Expression } from '../../expression/index.ts';
 import { bars, bracket, cases, fenced, group } from './brackets.ts';
-import { bracketArguments, applyKnown, opensBracket } from './calls.ts';
+import { bracketArguments, applyKnown, ofMatrix, opensBracket } from './calls.ts';
 import { derivative, indexed, integral, limit, shortDerivative } from './calculus.ts';
 import { isName } from './facts.ts';
 import { commandName, wordName } from './functionNames.ts';
@@ -9,10 +9,10 @@ import { numberOf, relationOf } from './grammar.ts';
 import { name, order } from './names.ts';
 import { deeper, fail, isMark, named, next, node, peek, type State, within } from './state.ts';
 import { type Token, Unreadable } from './tokens.ts';
+import { between, BOLD } from './vectors.ts';
 
 const DOTS = new Set('dots ldots cdots dotsb dotsc dotsi dotsm dotso vdots ddots'.split(' '));
 const ACCENTS = new Set('hat bar tilde dot ddot dddot check breve widehat widetilde overline mathring acute grave'.split(' '));
-const BOLD = new Set('vec mathbf bm boldsymbol overrightarrow pmb mathbfit'.split(' '));
 const LETTERFORMS = new Set('mathcal mathscr mathfrak mathbb'.split(' '));
 const SYMBOLS = new Set('hbar ell nabla imath jmath wp Re Im aleph prime dagger star circ degree square triangle'.split(' '));
 const ATOM_COMMANDS = new Set(['frac', 'dfrac', 'tfrac', 'cfrac', 'nicefrac', 'sfrac', 'sqrt', 'surd', 'binom', 'dbinom', 'tbinom', 'infty', 'sum', 'prod', 'int', 'lim', 'order', 'e', 'mathrmd', 'lvert', 'lVert', 'Vert', 'langle', 'lfloor', 'lceil', 'lparen', 'lbrack', 'lbrace', 'begin', 'partial', 'dv', 'pdv', 'abs', 'norm', 'intop', 'smallint', 'oint', 'iint', 'iiint', 'root', 'Gamma']);
@@ -267,9 +267,14 @@ function command(p: State): Expression {
       return node(p, from, { kind: 'call', function: 'abs', args: [value], written: '\\abs' });
     }
     case 'lvert':
-      return fenced(p, 'rvert', (value) => ({ kind: 'call', function: 'abs', args: [value], written: '|' }));
+      return fenced(p, 'rvert', (value) => between(value, '|'));
     case 'lVert':
       return fenced(p, 'rVert', (value) => ({ kind: 'vector', operation: 'norm', args: [value] }));
+    case 'Vert':
+      return doubleBars(p);
+    case 'det':
+      next(p);
+      return ofMatrix(p, from, 'determinant');
     case 'lfloor':
       return fenced(p, 'rfloor', (value) => ({ kind: 'call', function: 'floor', args: [value] }));
     case 'lceil':
@@ -330,7 +335,7 @@ function decorated(p: State): Expression {
   const open = peek(p).kind === 'open';
   const close = open ? (p.match[p.at] ?? -1) : p.at;
   const inner = open ? p.tokens.slice(p.at + 1, close) : [peek(p)];
-  const content = inner.map((x) => (x.kind === 'command' ? `\\${x.text}` : x.text)).join('');
+  const content = contentOf(p, inner, p.at + (open ? 1 : 0));
   p.at = close + 1;
   if (LETTERFORMS.has(t.text) && /^[Oo]$/.test(content) && (opensBracket(peek(p)) || peek(p).kind === 'open')) return order(p, from, content === 'o');
   if (content === '') fail(p, `\\${t.text} has no argument yet; add it in braces.`, t);
@@ -341,11 +346,37 @@ function decorated(p: State): Expression {
   for (; isMark(p.tokens[behind], "'") && behind < p.end; behind += 1) primes += 1;
   if (primes > 0) p.at = behind;
   const value = withSubscript(p, from, `\\${t.text}{${content}}${"'".repeat(primes)}`);
-  if (BOLD.has(t.text) && value.kind === 'symbol') {
+  const bold = BOLD.has(t.text) || inner.some((x) => x.kind === 'command' && BOLD.has(x.text));
+  if (bold && value.kind === 'symbol') {
     if (/^\d+$/.test(content)) return node(p, from, build.number(BigInt(content)));
     return node(p, from, { kind: 'vector', operation: 'symbol', name: value.name, args: [] });
   }
   return value;
+}
+
+/** The spelling of the tokens in an accent's argument; letters behind a command stay apart from it: `\mathbf{r}` for `\mathbf r`. */
+function contentOf(p: State, inner: readonly Token[], first: number): string {
+  return inner
+    .map((x, k) => {
+      if (x.kind === 'command') return `\\${x.text}`;
+      const before = inner[k - 1];
+      const argument = before?.kind === 'command' && (BOLD.has(before.text) || ACCENTS.has(before.text)) && p.tokens[first + k]?.kind === 'letter';
+      return argument ? `{${x.text}}` : x.text;
+    })
+    .join('');
+}
+
+/** `\|v\|`: the same sign opens and closes. */
+function doubleBars(p: State): Expression {
+  const from = p.at;
+  let close = from + 1;
+  while (close < p.end && !(p.tokens[close]?.kind === 'command' && p.tokens[close]?.text === 'Vert')) close = Math.max(close + 1, (p.match[close] ?? -1) + 1);
+  if (close >= p.end) fail(p, 'The double bar opened here is never closed; close it with \\|.');
+  next(p);
+  const value = within(p, close, () => p.grammar.sum(p));
+  if (p.at !== close) fail(p, `${named(peek(p))} is not understood between double bars; remove it or add an operator.`);
+  next(p);
+  return node(p, from, { kind: 'vector', operation: 'norm', args: [value] });
 }
 
 function rootWithDegree(p: State, from: number): Expression {

@@ -6,6 +6,7 @@ import { commandName, wordName } from './functionNames.ts';
 import { order } from './names.ts';
 import { deeper, fail, isCommand, isMark, named, next, node, peek, type State } from './state.ts';
 import type { Token } from './tokens.ts';
+import { between, isOperatorPair } from './vectors.ts';
 
 /** A braced group: its content, without the braces in the span. */
 export function group(p: State): Expression {
@@ -69,6 +70,8 @@ export function bracket(p: State): Expression {
   const args = bracketArguments(p);
   const [only] = args;
   if (args.length === 1 && only) return only;
+  const open = p.tokens[from]?.text;
+  if ((open === '[' || open === '\\{') && isOperatorPair(args)) return node(p, from, { kind: 'vector', operation: open === '[' ? 'commutator' : 'anticommutator', args });
   if (args.length === 0) return fail(p, 'These brackets are empty; write what belongs in them.', p.tokens[from]);
   return fail(p, 'A list in brackets is not a quantity; write the name of the function before it.', p.tokens[close]);
 }
@@ -86,10 +89,9 @@ export function bars(p: State): Expression {
     if (!isMark(peek(p), ...closer)) fail(p, 'The bar opened here is never closed; close it with |.', open);
     next(p);
     p.bars = before;
-    return node(p, from, isVector(value) ? { kind: 'vector', operation: 'norm', args: [value] } : { kind: 'call', function: 'abs', args: [value], written: '|' });
+    return node(p, from, between(value, '|'));
   });
 }
-const isVector = (e: Expression): boolean => e.kind === 'vector' || (e.kind === 'sum' && e.terms.some(isVector)) || (e.kind === 'negation' && isVector(e.operand));
 
 /** `\begin{cases} a & x < 0 \\ b & \text{otherwise} \end{cases}`. */
 export function cases(p: State): Expression {

@@ -193,3 +193,12 @@ function repeats(p: State, argument: Expression): boolean {
   }
   return false;
 }
+
+/** `\det(1 + \epsilon A)`, `\operatorname{tr} A`: the name is read, its argument follows. */
+export function ofMatrix(p: State, from: number, operation: 'trace' | 'determinant'): Expression {
+  while (peek(p).kind === 'space') next(p);
+  if (!p.grammar.startsFactor(p)) fail(p, `The argument of ${operation === 'trace' ? 'the trace' : 'the determinant'} is missing; write it in brackets.`);
+  const argument = opensBracket(peek(p)) ? bracketArguments(p)[0] : p.grammar.factor(p);
+  if (!argument) return fail(p, 'These brackets are empty; write what belongs in them.');
+  return node(p, from, { kind: 'vector', operation, args: [argument] });
+}

@@ -1,6 +1,7 @@
 /** What one pass over the tokens tells about the names in a formula: which stand before brackets, which stand alone, whether e and i are constants. */
 import type { Token } from './tokens.ts';
 import { GREEK } from './unicode.ts';
+import { isOneVector } from './vectors.ts';
 
 export interface NameFacts {
   /** Written with a prime or a comma in its brackets, or differentiated. */
@@ -91,6 +92,7 @@ export function gatherFacts(tokens: readonly Token[], match: Int32Array): NameFa
     if (bracket) {
       const close = match[k] ?? -1;
       let inner = k + 1;
+      if (isOneVector(tokens, match, inner, close)) surelyFunctions.add(full);
       for (; inner < close && inner < k + 400; inner += 1) {
         if (tokens[inner]?.kind === 'open' || is(inner, '(')) {
           inner = Math.max(inner, match[inner] ?? inner);

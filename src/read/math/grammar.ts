@@ -3,6 +3,7 @@ import { build, type Expression, Q, type Relation, type Span } from '../../expre
 import { isName, nameText } from './facts.ts';
 import { deeper, fail, isCommand, isMark, named, next, node, peek, type State } from './state.ts';
 import { MAX_DEPTH, type Token, TOO_DEEP } from './tokens.ts';
+import { vectorPair } from './vectors.ts';
 
 const RELATION_MARKS: Readonly<Record<string, Relation>> = { '=': '=', '==': '=', ':=': 'define', '<': '<', '>': '>', '<=': '<=', '>=': '>=', '!=': '!=', '~=': 'about', '=~': 'about', '~': 'tilde', '->': 'to', '<<': 'll', '>>': 'gg' };
 const RELATION_COMMANDS: Readonly<Record<string, Relation>> = {
@@ -153,8 +154,9 @@ function product(p: State, operatorBody: boolean): Expression {
       const start = p.at;
       const right = factorWithSign(p, true);
       const left = factors[factors.length - 1];
-      if (left?.kind === 'vector' && right.kind === 'vector' && t.kind === 'command') {
-        factors[factors.length - 1] = node(p, Math.min(start, from), { kind: 'vector', operation: t.text === 'times' || t.text === 'cross' ? 'cross' : 'dot', args: [left, right] });
+      const pair = left && t.kind === 'command' ? vectorPair(left, right) : null;
+      if (pair) {
+        factors[factors.length - 1] = node(p, Math.min(start, from), { kind: 'vector', operation: t.text === 'times' || t.text === 'cross' ? 'cross' : 'dot', args: pair });
       } else factors.push(right);
     } else if (isDivide(t)) {
       next(p);

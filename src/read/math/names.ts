@@ -4,11 +4,12 @@ import { lookupLatex } from '../../functions/index.ts';
 import { isName, nameText } from './facts.ts';
 import { resolve, wordName } from './functionNames.ts';
 import { exponentOf, smallText } from './grammar.ts';
-import { applyKnown, bracketArguments } from './calls.ts';
+import { applyKnown, bracketArguments, ofMatrix } from './calls.ts';
 import { indexExpression, letterFunction } from './letterFunctions.ts';
 import { fail, isMark, next, node, peek, type State, within } from './state.ts';
 import { GREEK } from './unicode.ts';
 import { type Token, Unreadable } from './tokens.ts';
+import { BOLD } from './vectors.ts';
 
 /** Subscript text in canonical form: one character or command bare, more in braces, no spaces. */
 export function subscript(p: State): string {
@@ -189,6 +190,7 @@ function applies(p: State, base: string, index: string, primes: number): boolean
   const itself = inner.some((t) => isName(t) && nameText(t) === base);
   const single = inner.length > 0 && (inner.every((t) => t.kind === 'digit') || (isName(inner[0]) && !inner.some((t) => (t.kind === 'mark' && !'_\''.includes(t.text)) || t.kind === 'command' && !GREEK.has(t.text)) && names(inner) === 1));
   if (itself) return false;
+  if (/^(?:[VWT]|\\rho)$/.test(base) && inner.some((t) => t.kind === 'command' && BOLD.has(t.text))) return !p.facts.bare.has(full);
   if (/^(?:[fFguyhGHUYS]|\\phi|\\varphi|\\psi|\\Phi|\\Psi)$/.test(base)) return !p.facts.bare.has(full) || /^[fuy]$/.test(base);
   return single && !p.facts.bare.has(full);
 }
@@ -272,6 +274,7 @@ function plainWord(p: State, from: number, t: Token): Expression | string {
   if (p.options.symbols.has(word)) return word;
   const known = wordName(word);
   if (known && canTakeArgument(p, word, t)) return applyKnown(p, from, known);
+  if (t.upright && /^(?:[Tt]r|trace|det)$/.test(word)) return ofMatrix(p, from, word === 'det' ? 'determinant' : 'trace');
   if (t.upright && !known && isMark(peek(p), '(') && !p.options.functions.has(word)) {
     throw new Unreadable(`The function ${word} is not known; write it with known functions.`, { start: t.start, end: t.end }, 'unknown-function');
   }

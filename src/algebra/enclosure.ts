@@ -91,10 +91,11 @@ export function createEvaluator(
           const real = description.encloseReal(
             args.map((z) => z.re),
             precision,
+            table.check,
           );
           if (real) return c.fromReal(real);
         }
-        return description.enclose?.(args, precision) ?? null;
+        return description.enclose?.(args, precision, table.check) ?? null;
       }
     }
   }

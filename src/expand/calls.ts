@@ -4,7 +4,7 @@ import { build, type CallNode, type Expression, Q } from '../expression/index.ts
 import { acceptsArity, describe, type FunctionDescription } from '../functions/index.ts';
 import { Declined } from '../outcome.ts';
 import {
-  add, divide, eventualSign, exactOf, exponential, growth, hyperbolic, imaginaryPart, inverse, type InverseFunction, isEvenLead, isRealMulti, leading, logarithm, mapConstants, type Multi, multiply, negate, noteSides, power, realPart,
+  add, divide, eventualSign, exactOf, exponential, growth, hyperbolic, imaginaryPart, inverse, type InverseFunction, isEvenLead, isRational, isRealMulti, leading, logarithm, mapConstants, type Multi, multiply, negate, noteSides, power, realPart,
   scaleBy, Series, sineCosine, split, subtract, withExact,
 } from '../series/index.ts';
 import { evaluateDescribed, refusePole } from './described.ts';
@@ -35,7 +35,7 @@ export function evaluateCall(s: Session, e: CallNode, evaluate: Evaluate): Multi
   return evaluateDescribed(s, description, args, evaluate);
 }
 
-const inverses: Readonly<Record<string, string>> = { asin: 'sin', acos: 'cos', atan: 'tan', asinh: 'sinh', atanh: 'tanh', log: 'exp' };
+const inverses: Readonly<Record<string, string>> = { asin: 'sin', acos: 'cos', atan: 'tan', asinh: 'sinh', acosh: 'cosh', atanh: 'tanh', log: 'exp' };
 
 /** asin(sin u) = u and the like, where u is real and its limit lies inside the principal range. */
 function inverseOfItself(s: Session, e: CallNode, evaluate: Evaluate): Multi | null {
@@ -49,14 +49,28 @@ function inverseOfItself(s: Session, e: CallNode, evaluate: Evaluate): Multi | n
     const other = inverseOfItself(s, { ...e, function: e.function === 'acos' ? 'asin' : 'acos' }, evaluate);
     return other === null ? null : subtract(c, c.field.fromExpression(build.quotient(build.constant('pi'), build.number(2))), other);
   }
+  // acos(cosh u) = i |u| for real u, continuous from below as on the cut (DLMF 4.23.24, 4.37.19).
+  if (inner.kind === 'call' && inner.function === 'cosh' && inner.args[0] && (e.function === 'acos' || e.function === 'asin')) {
+    const size = inverseOfItself(s, { ...e, function: 'acosh' }, evaluate);
+    if (size === null) return null;
+    const turned = scaleBy(c, size, c.field.i);
+    return e.function === 'acos' ? turned : subtract(c, c.field.fromExpression(build.quotient(build.constant('pi'), build.number(2))), turned);
+  }
+  // acosh(cos u) = i acos(cos u) (DLMF 4.37.24 on the real interval).
+  if (e.function === 'acosh' && inner.kind === 'call' && inner.function === 'cos') {
+    const angle = inverseOfItself(s, { ...e, function: 'acos' }, evaluate);
+    return angle === null ? null : scaleBy(c, angle, c.field.i);
+  }
   const argument = inner.kind === 'call' && inner.function === function_ && inner.args.length === 1 ? inner.args[0] : function_ === 'exp' && inner.kind === 'power' && inner.base.kind === 'constant' && inner.base.name === 'e' ? inner.exponent : undefined;
   if (!argument) return null;
   const u = evaluate(s, argument);
   if (!(u instanceof Series) || !isRealMulti(c, u)) return null;
+  if (e.function === 'acosh') return evaluate(s, build.call('abs', argument));
   if (e.function === 'asinh' || e.function === 'atanh' || e.function === 'log') return u;
   const { large, constant } = split(c, u);
   if (large) return null;
   const pi = c.field.fromExpression(build.constant('pi'));
+  if (e.function === 'acos' && isRational(constant) && constant.num === 0n) return evaluate(s, build.call('abs', argument));
   const [low, high] = e.function === 'acos' ? [Q.ZERO, pi] : [c.field.multiply(pi, Q.rational(-1, 2)), c.field.multiply(pi, Q.HALF)];
   return c.field.compare(constant, low) === 1 && c.field.compare(constant, high) === -1 ? u : null;
 }

@@ -122,6 +122,9 @@ export function refusePole(s: Session, d: FunctionDescription, args: readonly El
   const index = args.length - 1;
   const at = args[index];
   if (!d.local || at === undefined || !isRational(at)) return;
+  const key = `${d.id}:${args.map((a) => c.field.key(a)).join(',')}`;
+  if (s.finiteCalls.has(key)) return;
+  s.finiteCalls.add(key);
   const trees = args.map((a) => exactOf(c, a));
   if (d.value?.(trees)) return;
   for (const side of ['right', 'left'] as const) {

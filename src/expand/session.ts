@@ -11,6 +11,8 @@ export interface Session {
   readonly varying: Map<Expression, boolean>;
   /** Calls by their varying argument, then by function and constant arguments: equations for a function refer to itself. */
   readonly calls: WeakMap<Series, Map<string, Multi>>;
+  /** Calls of constants whose value was found finite, or is being looked at: local forms name the value they start from. */
+  readonly finiteCalls: Set<string>;
   readonly depth: { value: number };
   readonly fresh: { value: number };
 }
@@ -21,6 +23,7 @@ export const openSession = (context: Context, bindings: ReadonlyMap<string, Mult
   memo: new Map(),
   varying: new Map(),
   calls: new WeakMap(),
+  finiteCalls: new Set(),
   depth: { value: 0 },
   fresh: { value: 0 },
 });

@@ -79,8 +79,8 @@ export interface FunctionDescription {
   readonly equation?: (args: readonly Expression[], index: number) => { readonly polynomials: readonly (readonly Expression[])[]; readonly initial: readonly ((point: Expression) => Expression)[] } | null;
   /** Real-line domain in words for messages ("x > 0"), and the points where f is not analytic, for radii and discs. */
   readonly domain?: string;
-  /** Rigorous enclosure at real or complex balls; null where this precision or region is out of reach. Never an estimate. */
-  readonly enclose?: (args: readonly ComplexBall[], precision: number) => ComplexBall | null;
-  readonly encloseReal?: (args: readonly Ball[], precision: number) => Ball | null;
+  /** Rigorous enclosure at real or complex balls; null where this precision or region is out of reach. Never an estimate. `check` is called in long loops and throws where the time is up. */
+  readonly enclose?: (args: readonly ComplexBall[], precision: number, check?: () => void) => ComplexBall | null;
+  readonly encloseReal?: (args: readonly Ball[], precision: number, check?: () => void) => Ball | null;
   readonly source?: string;
 }

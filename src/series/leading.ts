@@ -5,11 +5,13 @@ import { Declined } from '../outcome.ts';
 import { compareExponents, signOfExponent, undecidedSign } from './exponent.ts';
 import { type Context, exactOf, isRational, type Lead, type Multi, type ScaleElement, Series } from './multi.ts';
 import { plainText } from './plain.ts';
-import { vanishes } from './vanish.ts';
+import { SMALL_TREE, vanishes } from './vanish.ts';
 
 /** Vanishing candidates before the search gives up (zero test undecided; decided as non-zero). */
 const CAP_UNDECIDED = 60;
 const CAP = 3000;
+/** Vanishing terms after which a small formula is tested for zero as a whole. */
+const FEW = 3;
 
 /** Null exactly if the series is zero. Throws Declined('undecided') where that cannot be found out, and 'no-expansion' where an O-term hides the leading term. */
 export function leading(c: Context, s: Series): Lead | null {
@@ -48,8 +50,8 @@ export function nextTermOrOrder(c: Context, s: Series, from: number, mayVanish =
     if (!term) return null;
     if (term.order || !isAbsent(c, term.coefficient, mayVanish)) return { index: k, exponent: term.exponent, coefficient: term.coefficient, order: term.order === true };
     const seen = k - from;
-    if (seen === c.patience.value) {
-      verdict = restVanishes(c, s, from);
+    if (seen === Math.min(FEW, c.patience.value) || seen === c.patience.value) {
+      verdict = restVanishes(c, s, from, term.exponent, seen === c.patience.value ? undefined : SMALL_TREE);
       if (verdict === 'yes') return null;
     }
     if (seen >= CAP || (verdict !== 'no' && seen >= Math.max(CAP_UNDECIDED, c.patience.value + 20))) {
@@ -59,14 +61,22 @@ export function nextTermOrOrder(c: Context, s: Series, from: number, mayVanish =
   }
 }
 
-/** Whether the function minus the terms before index is identically zero. */
-function restVanishes(c: Context, s: Series, index: number): Truth {
+/** Whether the function minus the terms before index is identically zero; all terms up to element^reached are known to vanish. */
+function restVanishes(c: Context, s: Series, index: number, reached: Element, largest?: number): Truth {
   const before: { exponent: Element; coefficient: Multi }[] = [];
   for (let k = 0; k < index; k += 1) {
     const term = s.stream.at(k);
     if (term) before.push(term);
   }
-  return vanishes(c, () => ({ whole: s.exact(), parts: before.map((t) => ({ coefficient: exactOf(c, t.coefficient), base: s.element.expression, exponent: exactOf(c, t.exponent) })) }));
+  return vanishes(
+    c,
+    () => ({
+      whole: s.exact(),
+      parts: before.map((t) => ({ coefficient: exactOf(c, t.coefficient), base: s.element.expression, exponent: exactOf(c, t.exponent) })),
+      tendsToZero: signOfExponent(c, reached) >= 0,
+    }),
+    largest,
+  );
 }
 
 /** True exactly if m is identically zero; throws Declined where undecided. */

@@ -28,7 +28,19 @@ export class Stream {
   private readonly known: Term[] = [];
   private state: 'open' | 'busy' | 'done' | 'failed' = 'open';
   private error: unknown = null;
-  constructor(private readonly next: (index: number) => Term | null) {}
+  /** `length`: the number of terms where it is known beforehand. */
+  constructor(
+    private readonly next: (index: number) => Term | null,
+    private readonly length: number | null = null,
+  ) {}
+
+  /** Of these terms and no more. */
+  static of(terms: readonly Term[]): Stream {
+    const stream = new Stream(() => null);
+    stream.known.push(...terms);
+    stream.state = 'done';
+    return stream;
+  }
 
   at(index: number): Term | null {
     while (this.known.length <= index && this.state !== 'done') {
@@ -48,9 +60,9 @@ export class Stream {
     return this.known[index] ?? null;
   }
 
-  /** Number of terms where the end was already seen, else null. */
+  /** Number of terms where it is known without asking for one (coefficients may still be zero), else null. */
   get knownLength(): number | null {
-    return this.state === 'done' ? this.known.length : null;
+    return this.state === 'done' ? this.known.length : this.length;
   }
 }
 

@@ -1,9 +1,9 @@
 /** Sums and products of multiseries. Every result keeps the function it stands for, so that zero can be decided exactly. */
 import type { Element } from '../algebra/types.ts';
-import { build, Q } from '../expression/index.ts';
+import { build, type Expression, Q } from '../expression/index.ts';
 import { addElements, type Context, exactOf, isLiteralOne, isLiteralZero, type Multi, multiplyElements, negateElement, type ScaleElement, Series, type Stream } from './multi.ts';
 import { compareMonomials, monomialOf } from './leading.ts';
-import { type CoefficientRing, finiteStream, mapStream, productStream, sumStream } from './stream.ts';
+import { allTerms, type CoefficientRing, finiteStream, mapStream, productStream, sumStream } from './stream.ts';
 
 const rings = new WeakMap<Context, CoefficientRing>();
 
@@ -38,7 +38,23 @@ export function add(c: Context, a: Multi, b: Multi): Multi {
   if (isLiteralZero(a)) return b;
   if (isLiteralZero(b)) return a;
   const element = fasterElement(a, b) as ScaleElement;
-  return new Series(element, sumStream(c, ringOf(c), streamIn(a, element), streamIn(b, element)), () => build.sum(exactOf(c, a), exactOf(c, b)));
+  const [x, y] = [streamIn(a, element), streamIn(b, element)];
+  const exact = () => build.sum(exactOf(c, a), exactOf(c, b));
+  const sum = sumStream(c, ringOf(c), x, y);
+  return (x.knownLength ?? LONG) + (y.knownLength ?? LONG) <= MOST_AT_ONCE ? finite(element, sum, exact) : new Series(element, sum, exact);
+}
+
+/** Finite results up to this many terms are worked out at once, so that what cancels by form is gone. */
+const MOST_AT_ONCE = 24;
+const LONG = Infinity;
+
+/** The finite series; a constant where nothing else is left of it. */
+function finite(element: ScaleElement, stream: Stream, exact: () => Expression): Multi {
+  const terms = allTerms(stream);
+  const [first] = terms;
+  if (!first) return Q.ZERO;
+  if (terms.length === 1 && !first.order && isLiteralZero(first.exponent)) return first.coefficient;
+  return new Series(element, finiteStream(terms), exact);
 }
 
 export function scaleBy(c: Context, a: Multi, by: Element): Multi {
@@ -61,7 +77,8 @@ export function multiply(c: Context, a: Multi, b: Multi): Multi {
     const [fast, slow] = a.element === element ? [a, b] : [b, a];
     return new Series(element, mapStream(fast.stream, (t) => ({ ...t, coefficient: multiply(c, t.coefficient, slow) })), exact);
   }
-  return new Series(element, productStream(c, ringOf(c), a.stream, b.stream), exact);
+  const product = productStream(c, ringOf(c), a.stream, b.stream);
+  return (a.stream.knownLength ?? LONG) * (b.stream.knownLength ?? LONG) <= MOST_AT_ONCE ? finite(element, product, exact) : new Series(element, product, exact);
 }
 
 /** The same series times element^exponent; the element must be at least as fast as m's own. */

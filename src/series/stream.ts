@@ -5,14 +5,14 @@ import { compareExponents } from './exponent.ts';
 import { addElements, type Context, isLiteralZero, isRational, type Multi, Series, Stream, type Term } from './multi.ts';
 
 
-export const finiteStream = (terms: readonly Term[]): Stream => new Stream((k) => terms[k] ?? null);
+export const finiteStream = (terms: readonly Term[]): Stream => Stream.of(terms);
 export const mapStream = (s: Stream, f: (term: Term) => Term): Stream =>
   new Stream((k) => {
     const term = s.at(k);
     return term && f(term);
-  });
+  }, s.knownLength);
 /** The terms from index on. */
-export const dropTerms = (s: Stream, count: number): Stream => new Stream((k) => s.at(k + count));
+export const dropTerms = (s: Stream, count: number): Stream => new Stream((k) => s.at(k + count), s.knownLength === null ? null : Math.max(0, s.knownLength - count));
 /** The first terms only. */
 export const takeTerms = (s: Stream, count: number): Stream => new Stream((k) => (k < count ? s.at(k) : null));
 export const prepend = (first: Term, rest: Stream): Stream => new Stream((k) => (k === 0 ? first : rest.at(k - 1)));
@@ -54,6 +54,16 @@ export function sumOfStreams(c: Context, ring: CoefficientRing, part: (k: number
       return order ? { exponent: least, coefficient: total, order: true } : { exponent: least, coefficient: total };
     }
   });
+}
+
+/** The terms of a stream that is known to end, without those that are zero by form. */
+export function allTerms(s: Stream): Term[] {
+  const terms: Term[] = [];
+  for (let k = 0; ; k += 1) {
+    const term = s.at(k);
+    if (!term) return terms;
+    if (term.order || !isLiteralZero(term.coefficient)) terms.push(term);
+  }
 }
 
 /** How coefficients are combined; given by the ring of multiseries, which is built on streams. */

@@ -81,7 +81,7 @@ const airy = (kind: AiryKind): Algorithm => ({
 
 /** ber + i bei = J_nu(x e^(3 pi i/4)), ker + i kei = e^(-nu pi i/2) K_nu(x e^(pi i/4)) (DLMF 10.61.1, 10.61.2). */
 function kelvin(kit: Kit<Ball>, order: Ball, x: Ball, kind: 'Ber' | 'Bei' | 'Ker' | 'Kei'): Ball | null {
-  const c = complexKit(kit.precision);
+  const c = complexKit(kit.precision, kit.check);
   const s = kit.a.sqrt(kit.a.fromRational(Q.HALF));
   if (s === null || real.exponentOf(x) > 12) return null;
   const nu = parameterOf(order);

@@ -102,6 +102,7 @@ function harmonicSum<T>(kit: Kit<T>, n: number, quarter: T): T | null {
   let sum = a.zero;
   const size = kit.size(quarter);
   for (let k = 0; k < 100_000 && power !== null; k++) {
+    kit.check();
     const weight = a.fromRational(Q.add(harmonicNumber(k), harmonicNumber(n + k)));
     const term = a.multiply(power, weight);
     if (k >= 1 && bound.exponent(kit.size(term)) < Math.max(bound.exponent(kit.size(sum)), bound.exponent(kit.size(power))) - precision) {
@@ -120,6 +121,7 @@ function finiteSum<T>(kit: Kit<T>, n: number, w: T): T {
   let sum = a.zero;
   let power = a.one;
   for (let k = 0; k < n; k++) {
+    kit.check();
     sum = a.add(sum, a.multiply(power, a.fromRational(Q.rational(factorial(n - k - 1), factorial(k)))));
     power = a.multiply(power, w);
   }

@@ -19,6 +19,7 @@ function agmSteps(kit: Kit<Ball>, b: Ball): readonly [Ball, Ball] | null {
   // c_0^2 = 1 - b^2, weight 2^-1.
   let sum = a.divideInteger(a.subtract(a.one, a.square(b)), 2);
   for (let n = 0; n < 200; n++) {
+    kit.check();
     const mean = a.divideInteger(a.add(upper, lower), 2);
     const geometric = a.sqrt(a.multiply(upper, lower));
     if (geometric === null) return null;
@@ -77,6 +78,7 @@ function duplicate(kit: Kit<Ball>, start: readonly [Ball, Ball, Ball], kind: 'F'
   let sum = a.zero;
   let scale = 0;
   for (let n = 0; n < precision + 60; n++) {
+    kit.check();
     const spread = real.exponentOf(real.subtract(real.upperEnd(real.maximum(real.maximum(x, y), z)), real.lowerEnd(real.minimum(real.minimum(x, y), z)), 64));
     if (spread < real.exponentOf(z) - precision - 2 || (n > 8 && spread <= Math.max(errorExponent(x), errorExponent(y), errorExponent(z)) + 3)) break;
     const roots = [a.sqrt(x), a.sqrt(y), a.sqrt(z)];
@@ -132,6 +134,7 @@ function completePi(kit: Kit<Ball>, n: Ball, m: Ball): Ball | null {
   let sum = a.zero;
   let scale = 0;
   for (let i = 0; i < precision + 60; i++) {
+    kit.check();
     const all = [x, y, z, p];
     const high = all.reduce((u, v) => real.maximum(u, v));
     const low = all.reduce((u, v) => real.minimum(u, v));

@@ -24,9 +24,10 @@ export function inverseOfIncreasing(kit: Kit<Ball>, f: (kit: Kit<Ball>, y: Ball)
   }
   const target = x;
   if (side(f, kit, low, target) !== -1 || side(f, kit, high, target) !== 1) return null;
-  let search = realKit(Math.min(SEARCH_BITS, precision));
+  let search = realKit(Math.min(SEARCH_BITS, precision), kit.check);
   // Bisection until the bracket is narrow relative to its place, or signs cannot be told apart.
   for (let i = 0; i < 400; i++) {
+    kit.check();
     const middle = middleOf(low, high);
     const width = real.exponentOf(real.subtract(high, low, SEARCH_BITS));
     if (width < real.exponentOf(middle) - 24 || width < -4 * precision) break;

@@ -6,6 +6,8 @@ export interface Kit<T> {
   readonly precision: number;
   readonly a: Arithmetic<T>;
   readonly isReal: boolean;
+  /** Called in long loops: throws where the time of the request is up. */
+  readonly check: () => void;
   /** An exact ball not below |z| for any z of the set. */
   size(z: T): Ball;
   /** An exact ball not above |z| for any z of the set. */
@@ -17,10 +19,13 @@ export interface Kit<T> {
   fromReal(x: Ball): T;
 }
 
-export const realKit = (precision: number): Kit<Ball> => ({
+const untimed = (): void => undefined;
+
+export const realKit = (precision: number, check: () => void = untimed): Kit<Ball> => ({
   precision,
   a: ballArithmetic(precision),
   isReal: true,
+  check,
   size: real.absoluteUpper,
   least: real.absoluteLower,
   realPart: (z) => z,
@@ -29,10 +34,11 @@ export const realKit = (precision: number): Kit<Ball> => ({
   fromReal: (x) => x,
 });
 
-export const complexKit = (precision: number): Kit<ComplexBall> => ({
+export const complexKit = (precision: number, check: () => void = untimed): Kit<ComplexBall> => ({
   precision,
   a: complex.arithmetic(precision, true),
   isReal: false,
+  check,
   size: (z) => real.absoluteUpper(complex.absolute(z, BOUND_BITS)),
   least: (z) => real.absoluteLower(complex.absolute(z, BOUND_BITS)),
   realPart: (z) => z.re,

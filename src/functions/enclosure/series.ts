@@ -19,6 +19,7 @@ export function hypergeometricSum<T>(kit: Kit<T>, tops: readonly Parameter<T>[],
   const size = kit.size(z);
   if (size.mid === 0n) return sum;
   for (let k = 0; k < MOST_TERMS; k++) {
+    kit.check();
     const next = advance(kit, term, z, tops, shifted, k);
     if (next === null) return null;
     term = next;
@@ -97,6 +98,7 @@ export function asymptoticSum<T>(kit: Kit<T>, first: T, step: (term: T, k: numbe
   let term = first;
   let sum = first;
   for (let k = 0; k < 100_000; k++) {
+    kit.check();
     const next = step(term, k);
     if (next === null) return null;
     if (a.isZero(next)) return sum;

@@ -21,12 +21,13 @@ const MOST_BITS = 60_000;
 const argumentBits = (x: Ball): number => (x.rad === 0n ? Infinity : Math.max(0, real.relativeAccuracy(x)));
 
 /** Raises the working precision until the result has the bits asked for, or the argument, which knows `limit` bits, allows no more. */
-function adaptive<T>(attempt: (bits: number) => T | null, accuracy: (value: T) => number, precision: number, limit: number): T | null {
+function adaptive<T>(attempt: (bits: number) => T | null, accuracy: (value: T) => number, precision: number, limit: number, check: (() => void) | undefined): T | null {
   const wanted = Math.min(precision, limit + 24);
   let bits = wanted + 16;
   let best: T | null = null;
   let bestAccuracy = -Infinity;
   for (let round = 0; round < 12 && bits <= Math.min(MOST_BITS, 40 * (precision + 64)); round++) {
+    check?.();
     const value = attempt(bits);
     if (value === null) {
       if (round >= (limit < Infinity ? 1 : 2)) return best;
@@ -58,27 +59,27 @@ const complexAccuracy = (z: ComplexBall): number => {
   return size === -Infinity ? Infinity : size - error;
 };
 
-function realDirect(id: string, args: readonly Ball[], precision: number): Ball | null {
+function realDirect(id: string, args: readonly Ball[], precision: number, check?: () => void): Ball | null {
   const algorithm = ALGORITHMS.get(id);
   if (!algorithm?.real) return null;
   const { real: f } = algorithm;
   const limit = Math.min(...args.map(argumentBits));
-  const value = adaptive((bits) => f(realKit(bits), args), real.relativeAccuracy, precision, limit);
+  const value = adaptive((bits) => f(realKit(bits, check), args), real.relativeAccuracy, precision, limit, check);
   return value && real.round(value, precision + 8);
 }
-function complexDirect(id: string, args: readonly ComplexBall[], precision: number): ComplexBall | null {
+function complexDirect(id: string, args: readonly ComplexBall[], precision: number, check?: () => void): ComplexBall | null {
   const algorithm = ALGORITHMS.get(id);
   const limit = Math.min(...args.flatMap((z) => [argumentBits(z.re), argumentBits(z.im)]));
   const f = algorithm?.complex;
   if (!f) return null;
-  const value = adaptive((bits) => f(complexKit(bits), args), complexAccuracy, precision, limit);
+  const value = adaptive((bits) => f(complexKit(bits, check), args), complexAccuracy, precision, limit, check);
   return value && complex.round(value, precision + 8);
 }
 
 /** Descriptions as the derivative trees see them: direct evaluation, no derivatives of derivatives. */
-const companion = (id: string) => ({
-  encloseReal: (args: readonly Ball[], precision: number): Ball | null => realDirect(id, args, precision),
-  enclose: (args: readonly ComplexBall[], precision: number): ComplexBall | null => complexDirect(id, args, precision),
+const companion = (check: (() => void) | undefined) => (id: string) => ({
+  encloseReal: (args: readonly Ball[], precision: number): Ball | null => realDirect(id, args, precision, check),
+  enclose: (args: readonly ComplexBall[], precision: number): ComplexBall | null => complexDirect(id, args, precision, check),
 });
 
 const SLOPE_BITS = 48;
@@ -99,31 +100,31 @@ function withEnclosure(description: FunctionDescription, algorithm: Algorithm): 
     return tree;
   };
 
-  const encloseReal = (args: readonly Ball[], precision: number): Ball | null => {
-    const direct = realDirect(id, args, precision);
+  const encloseReal = (args: readonly Ball[], precision: number, check?: () => void): Ball | null => {
+    const direct = realDirect(id, args, precision, check);
     const last = args.length - 1;
     const x = args[last];
     if (!x || x.rad === 0n || algorithm.slope === false || args.slice(0, -1).some((arg) => arg.rad !== 0n)) return direct;
     const tree = slope(args.length, last);
     if (!tree || direct === null) return direct;
-    const middle = realDirect(id, [...args.slice(0, -1), real.midpoint(x)], Math.min(precision, argumentBits(x) + 32));
+    const middle = realDirect(id, [...args.slice(0, -1), real.midpoint(x)], Math.min(precision, argumentBits(x) + 32), check);
     if (middle === null) return direct;
-    const steep = evaluateTree(tree, new Map(args.map((arg, i) => [place(i), arg])), realBallTrees(SLOPE_BITS), companion);
+    const steep = evaluateTree(tree, new Map(args.map((arg, i) => [place(i), arg])), realBallTrees(SLOPE_BITS), companion(check));
     if (steep === null) return direct;
     const byMean = real.withRadius(middle, real.absoluteUpper(real.multiply(real.radius(x), steep, SLOPE_BITS)));
     return real.intersection(direct, byMean, precision) ?? direct;
   };
 
-  const enclose = (args: readonly ComplexBall[], precision: number): ComplexBall | null => {
-    const direct = complexDirect(id, args, precision);
+  const enclose = (args: readonly ComplexBall[], precision: number, check?: () => void): ComplexBall | null => {
+    const direct = complexDirect(id, args, precision, check);
     const last = args.length - 1;
     const z = args[last];
     if (!z || complex.isExact(z) || direct === null || algorithm.slope === false || args.slice(0, -1).some((arg) => !complex.isExact(arg))) return direct;
     const tree = slope(args.length, last);
     if (!tree) return direct;
-    const middle = complexDirect(id, [...args.slice(0, -1), complex.midpoint(z)], precision);
+    const middle = complexDirect(id, [...args.slice(0, -1), complex.midpoint(z)], precision, check);
     if (middle === null) return direct;
-    const steep = evaluateTree(tree, new Map(args.map((arg, i) => [place(i), arg])), complexBallTrees(SLOPE_BITS, true), companion);
+    const steep = evaluateTree(tree, new Map(args.map((arg, i) => [place(i), arg])), complexBallTrees(SLOPE_BITS, true), companion(check));
     if (steep === null) return direct;
     // |f(z) - f(m)| <= |z - m| sup |f'|: the rectangle is convex.
     const reach = real.absoluteUpper(complex.absolute({ re: real.radius(z.re), im: real.radius(z.im) }, SLOPE_BITS));

@@ -37,6 +37,7 @@ function stirlingSum<T>(kit: Kit<T>, z: T, order: number): T | null {
   const target = order === 0 ? -precision : bound.exponent(kit.size(power)) - precision;
   let last: Ball | null = null;
   for (let k = 1; k < 4 * precision + 40; k++) {
+    kit.check();
     const b = bernoulli(2 * k);
     const c = Q.multiply(b, Q.rational(factorial(2 * k + order - 2), factorial(2 * k)));
     sum = a.add(sum, divideRational(kit, power, c));
@@ -87,6 +88,7 @@ export function logGamma<T>(kit: Kit<T>, z: T): T | null {
   }
   let result: T = far;
   for (let j = 0; j < r; j++) {
+    kit.check();
     const term = a.log(a.add(z, a.fromInteger(j)));
     if (term === null) return null;
     result = a.subtract(result, term);
@@ -147,6 +149,7 @@ export function digamma<T>(kit: Kit<T>, z: T): T | null {
   if (sum === null || logarithm === null || halfInverse === null) return null;
   let result = a.subtract(a.subtract(logarithm, halfInverse), sum);
   for (let j = 0; j < r; j++) {
+    kit.check();
     const term = a.divide(a.one, a.add(z, a.fromInteger(j)));
     if (term === null) return null;
     result = a.subtract(result, term);
@@ -171,6 +174,7 @@ function polygamma<T>(kit: Kit<T>, order: number, z: T): T | null {
   total = a.add(total, sum);
   const scale = a.fromInteger(factorial(order));
   for (let j = 0; j < r; j++) {
+    kit.check();
     const term = a.powerInteger(a.add(z, a.fromInteger(j)), -(order + 1));
     if (term === null) return null;
     total = a.add(total, a.multiply(scale, term));
@@ -232,6 +236,7 @@ function integerUpperGamma<T>(kit: Kit<T>, m: number, x: T): T | null {
   let power: T = a.one;
   if (decay === null) return null;
   for (let j = 1; j <= m; j++) {
+    kit.check();
     const next = a.divide(power, x);
     if (next === null) return null;
     power = next;

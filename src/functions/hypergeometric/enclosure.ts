@@ -45,6 +45,7 @@ function logarithmicSum<T>(kit: Kit<T>, tops: readonly Parameter<T>[], m: number
   let sum = a.zero;
   const size = kit.size(z);
   for (let k = 0; k < 50_000 && weight !== null; k++) {
+    kit.check();
     const term = a.multiply(weight, shift);
     if (bound.exponent(kit.size(term)) < Math.max(bound.exponent(kit.size(sum)), bound.exponent(kit.size(weight))) - precision || k % 32 === 31) {
       const tail = logarithmicTail(kit, tops, m, size, weight, shift, k);
@@ -124,6 +125,7 @@ function gaussNearOne<T>(kit: Kit<T>, p1: Parameter<T>, p2: Parameter<T>, c: Par
   let finite = a.zero;
   let term: T = a.one;
   for (let k = 0; k < m; k++) {
+    kit.check();
     finite = a.add(finite, term);
     const next = a.multiply(a.multiply(term, v), a.multiply(a.add(toSet(kit, p1), a.fromInteger(k)), a.add(toSet(kit, p2), a.fromInteger(k))));
     if (k + 1 < m) term = a.divide(next, a.fromInteger((k + 1) * (1 - m + k))) ?? a.zero;
@@ -200,6 +202,7 @@ function kummerU<T>(kit: Kit<T>, p: Parameter<T>, b: Parameter<T>, x: T): T | nu
   const signed = m % 2 === 0 ? a.negate(main) : main;
   let finite = a.zero;
   for (let k = 1; k <= m; k++) {
+    kit.check();
     let rising: T = a.one;
     for (let j = 0; j < m - k; j++) rising = a.multiply(rising, a.add(toSet(kit, plus(kit, Q.ONE, minus(kit, p))), a.fromInteger(k + j)));
     const power = a.powerInteger(x, -k);

@@ -103,6 +103,7 @@ function complexW(kit: Kit<ComplexBall>, branch: number, z: ComplexBall): Comple
   if (!w) return null;
   w = complex.midpoint(w);
   for (let i = 0; i < 60; i++) {
+    kit.check();
     const e = loose.exp(w);
     const step = e && loose.divide(loose.subtract(loose.multiply(w, e), middle), loose.multiply(loose.add(w, loose.one), e));
     if (!step) return null;
@@ -120,6 +121,7 @@ function certified(kit: Kit<ComplexBall>, branch: number, w: ComplexBall, z: Com
   if (!shift) return null;
   let reach = real.absoluteUpper(real.add(complex.absolute(shift, 40), { mid: 1n, rad: 0n, exp: real.exponentOf(complex.absolute(w, 40)) - kit.precision }, 40));
   for (let i = 0; i < 12; i++) {
+    kit.check();
     reach = real.scaleByPowerOfTwo(reach, 1);
     const box = kit.inflate(w, reach);
     const grown = a.exp(box);

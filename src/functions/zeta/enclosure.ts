@@ -52,6 +52,7 @@ function hurwitzJet<T>(kit: Kit<T>, s: T, z: T, order: number, atPole: boolean):
   if (N > 60_000) return null;
   let total: Jet<T> = Array.from({ length: order + 1 }, () => a.zero);
   for (let k = 0; k < N; k++) {
+    kit.check();
     const term = powerJet(kit, a.add(z, a.fromInteger(k)), s, order);
     if (term === null) return null;
     total = addJets(kit, total, term);
@@ -86,6 +87,7 @@ function poleIntegral<T>(kit: Kit<T>, w: T, order: number): Jet<T> | null {
   let term: T = a.negate(logarithm);
   const out: T[] = [term];
   for (let n = 1; n <= order; n++) {
+    kit.check();
     term = a.divideInteger(a.negate(a.multiply(term, logarithm)), n + 1);
     out.push(term);
   }
@@ -102,6 +104,7 @@ function bernoulliTail<T>(kit: Kit<T>, s: T, w: T, power: Jet<T>, inverse: T, or
   const goal = bound.exponent(kit.size(total[0] ?? a.one)) - precision;
   let last: Ball | null = null;
   for (let k = 1; k < 4 * precision + 60; k++) {
+    kit.check();
     const c = Q.divide(bernoulli(2 * k), Q.rational(factorial(2 * k)));
     total = addJets(kit, total, scaleJet(kit, rising, a.fromRational(c)));
     const rest = remainderBound(kit, s, w, k, order);
@@ -150,7 +153,7 @@ export function zeta<T>(kit: Kit<T>, s: T): T | null {
   const n = onLine ? exactInteger(kit.realPart(s), 3000) : null;
   if (n !== null && n !== 1) return kit.fromReal(real.zeta(n, kit.precision));
   if (onLine && !kit.isReal) {
-    const value = zeta(realKit(kit.precision), kit.realPart(s));
+    const value = zeta(realKit(kit.precision, kit.check), kit.realPart(s));
     return value === null ? null : kit.fromReal(value);
   }
   const re = real.toDouble(kit.realPart(s));

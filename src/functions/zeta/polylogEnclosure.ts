@@ -24,7 +24,7 @@ export function polylog<T>(kit: Kit<T>, s: T, x: T): T | null {
     if (!real.isNegative(value)) return null;
     const accelerated = alternatingPolylog(kit.precision, kit.realPart(s), value);
     if (accelerated !== null) return kit.fromReal(accelerated);
-    const c = complexKit(kit.precision);
+    const c = complexKit(kit.precision, kit.check);
     if (!isInteger) {
       const far = jonquiere(c, kit.realPart(s), value);
       return far === null ? null : kit.fromReal(far);
@@ -50,7 +50,7 @@ function eulerianPolylog<T>(kit: Kit<T>, n: number, x: T): T | null {
 /** For x < 0 and s no integer: 2 Gamma(1-s)/(2pi)^(1-s) Re(i^(1-s) zeta(1-s, 1/2 - i log(-x)/(2pi))), from DLMF 25.12.13. */
 function jonquiere(kit: Kit<ComplexBall>, s: Ball, x: Ball): Ball | null {
   const { a, precision } = kit;
-  const line = realKit(precision);
+  const line = realKit(precision, kit.check);
   const t = line.a.subtract(real.ONE, s);
   const g = gamma(line, t);
   const logarithm = real.log(real.negate(x), precision);
@@ -117,6 +117,7 @@ function polylogGeneral<T>(kit: Kit<T>, s: T, x: T, order: number | null, mu: T)
   if (inner === null || w === null || order === null) return null;
   let total = order % 2 === 0 ? a.negate(inner) : inner;
   for (let k = 0; 2 * k <= order; k++) {
+    kit.check();
     const power = a.powerInteger(w, order - 2 * k);
     if (power === null) return null;
     const eta = k === 0 ? real.scaleByPowerOfTwo(real.ONE, -1) : real.multiply(real.fromRational(Q.subtract(Q.ONE, Q.power(Q.rational(2), 1 - 2 * k)), kit.precision), real.zeta(2 * k, kit.precision), kit.precision);
@@ -139,6 +140,7 @@ function polylogSum<T>(kit: Kit<T>, s: T, x: T): T | null {
   let sum = a.zero;
   const growth = Math.max(0, Math.ceil(-real.toDouble(real.lowerEnd(kit.realPart(s)))));
   for (let k = 1; k < 100_000; k++) {
+    kit.check();
     const weight = integer ? a.powerInteger(a.fromInteger(k), -n) : weightOf(kit, k, s);
     if (weight === null) return null;
     const term = a.multiply(power, weight);
@@ -173,6 +175,7 @@ function aroundOne<T>(kit: Kit<T>, s: T, mu: T, order: number | null): T | null 
   if (!a.isZero(kit.fromReal(kit.imaginaryPart(s))) || !(Math.abs(sigma) < 1000)) return null;
   const growth = Math.max(0, Math.ceil(-sigma) + 1);
   for (let k = 0; k < 20_000; k++) {
+    kit.check();
     if (!(order !== null && order - k === 1)) {
       const value = zeta(kit, a.subtract(s, a.fromInteger(k)));
       if (value === null) return null;
@@ -234,6 +237,7 @@ function clausen(kit: Kit<Ball>, t: Ball): Ball | null {
   let sum = a.subtract(u, a.multiply(u, logarithm));
   const ratio = bound.power(bound.divide(real.absoluteUpper(u), real.absoluteLower(TWO_PI)) ?? bound.one, 2);
   for (let k = 1; k < 20_000; k++) {
+    kit.check();
     sum = a.add(sum, a.multiply(power, a.fromRational(Q.divide(Q.absolute(bernoulli(2 * k)), Q.rational(BigInt(2 * k) * factorial(2 * k + 1))))));
     power = a.multiply(power, square);
     const tail = geometricTail(bound.multiply(bound.multiply(bound.integer(4), real.absoluteUpper(u)), bound.power(ratio, k + 1)), ratio);
@@ -249,7 +253,7 @@ function nearZeroClausen(u: Ball): Ball {
 }
 /** Im Li_2(ix). */
 function inverseTangentIntegral(kit: Kit<Ball>, x: Ball): Ball | null {
-  const c = complexKit(kit.precision);
+  const c = complexKit(kit.precision, kit.check);
   const value = polylog(c, complex.fromInteger(2), { re: real.ZERO, im: x });
   return value && value.im;
 }
@@ -265,6 +269,7 @@ function debye(kit: Kit<Ball>, n: number, x: Ball): Ball | null {
     let power = a.one;
     let sum = a.zero;
     for (let k = 0; k < 20_000; k++) {
+      kit.check();
       const c = Q.multiply(Q.rational(n, n + k), Q.divide(bernoulli(k), Q.rational(factorial(k))));
       if (c.num !== 0n) sum = a.add(sum, a.multiply(power, a.fromRational(c)));
       power = a.multiply(power, x);
@@ -279,6 +284,7 @@ function debye(kit: Kit<Ball>, n: number, x: Ball): Ball | null {
   if (decay === null || inverse === null) return null;
   let total = a.multiply(a.multiply(real.zeta(n + 1, precision), a.fromInteger(BigInt(n) * factorial(n))), a.powerInteger(inverse, n) ?? a.zero);
   for (let j = 0; j <= n; j++) {
+    kit.check();
     const li = polylogSum(kit, a.fromInteger(j + 1), decay);
     if (li === null) return null;
     total = a.subtract(total, a.multiply(a.multiply(li, a.fromRational(Q.rational(BigInt(n) * factorial(n), factorial(n - j)))), a.powerInteger(inverse, j) ?? a.one));

@@ -3,7 +3,7 @@ import { Q, type Rational } from '../expression/index.ts';
 import { type Budget, Declined } from '../outcome.ts';
 import { type Interval, interval } from '../rigorous/index.ts';
 import { approximateValue, ERROR_BITS, evaluationError } from './evaluationError.ts';
-import { powerOfTwo, ulpExponent } from './format.ts';
+import { powerOfTwo, ulpExponent, ulpExponentOf } from './format.ts';
 import type { Arithmetic, Program } from './program.ts';
 
 export interface ErrorPiece {
@@ -165,8 +165,8 @@ export function binadeRuns(pieces: readonly ErrorPiece[], r: number, { result }:
     const size = interval.size(value);
     const least = Math.max(0, interval.down(interval.leastSize(value) / interval.up(1 + r)));
     const most = interval.up(size / interval.down(1 - r));
-    const exponent = ulpExponent(Q.fromDouble(least), result);
-    const higher = ulpExponent(Q.fromDouble(most), result);
+    const exponent = ulpExponentOf(least, result);
+    const higher = ulpExponentOf(most, result);
     const level = 2 ** (higher + result.precision - 1);
     if (higher !== exponent + 1 || most > level * (1 + 2 ** -12)) {
       add(x, exponent, error, size);

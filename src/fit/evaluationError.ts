@@ -9,7 +9,7 @@
 import { type Expression, Q, type Rational } from '../expression/index.ts';
 import { Declined } from '../outcome.ts';
 import { type Interval, interval } from '../rigorous/index.ts';
-import { binaryExponent, type FixedFormat, type FloatFormat, isRepresentable, type NumberFormat, powerOfTwo } from './format.ts';
+import { binadeOf, binaryExponent, type FixedFormat, type FloatFormat, isRepresentable, type NumberFormat, powerOfTwo } from './format.ts';
 import type { Arithmetic, Program } from './program.ts';
 
 export interface RoundedValue {
@@ -41,10 +41,7 @@ const UNIT: Interval = { lo: 0, hi: 1 };
 export function roundingError(magnitude: number, format: FloatFormat, scaled = magnitude * SCALE): number {
   if (magnitude === 0 || scaled === 0) return 0;
   if (!(magnitude < Infinity)) return Infinity;
-  let e = Math.max(Math.floor(Math.log2(magnitude)), format.emin);
-  // The logarithm is only a guess: settle it by exact powers of two.
-  while (2 ** (e + 1) <= magnitude) e += 1;
-  while (e > format.emin && 2 ** e > magnitude) e -= 1;
+  const e = Math.max(binadeOf(magnitude), format.emin);
   const half = 2 ** (e - format.precision + ERROR_BITS);
   const start = 2 ** e;
   const below = e > format.emin && magnitude >= start ? Math.max(half / 2, up(magnitude - start) * SCALE) : half;

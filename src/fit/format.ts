@@ -38,6 +38,17 @@ export function ulpExponent(y: Rational, format: FloatFormat): number {
   const e = Q.isZero(y) ? format.emin : Math.max(binaryExponent(y), format.emin);
   return e - format.precision + 1;
 }
+/** The same of a double that is not negative. */
+export const ulpExponentOf = (y: number, format: FloatFormat): number => Math.max(binadeOf(y), format.emin) - format.precision + 1;
+
+/** Floor of log2 of a positive double; -1075 at zero. The logarithm is only a guess that exact powers of two settle. */
+export function binadeOf(y: number): number {
+  if (y === 0) return -1075;
+  let e = Math.max(Math.floor(Math.log2(y)), -1074);
+  while (e < 1023 && 2 ** (e + 1) <= y) e += 1;
+  while (e > -1074 && 2 ** e > y) e -= 1;
+  return e;
+}
 export const ulp = (y: Rational, format: FloatFormat): Rational => powerOfTwo(ulpExponent(y, format));
 
 /** Half the distance of 1 to the next number: the unit roundoff u = 2^-p. */

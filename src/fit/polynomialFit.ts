@@ -8,7 +8,7 @@ import { fromFixed } from './fixed.ts';
 import { binaryExponent, type FloatFormat, powerOfTwo, roundTo } from './format.ts';
 import { shiftedResidual } from './grid.ts';
 import { type Arithmetic, canStandApart, polynomialProgram, type Program } from './program.ts';
-import { certifiedTerms, type CertifiedPolynomial, errorParts, type EvaluationProof, type FitMeasure, type ProofProblem, type ProvedError, proveProgram } from './proof.ts';
+import { certifiedTerms, type CertifiedPolynomial, errorParts, type EvaluationProof, type FitMeasure, type InheritedError, type ProofProblem, type ProvedError, proveProgram } from './proof.ts';
 import { type Basis, basisFor, bestOfDegree, type Found, leastDegree, leastWithin, nextDegree, type Search } from './search.ts';
 import { type FitTarget, prepareTarget } from './target.ts';
 import { economizedOfDegree, taylorOfDegree, taylorWithin } from './truncated.ts';
@@ -34,6 +34,8 @@ export interface PolynomialProblem {
   readonly writtenFma: boolean;
   readonly basis?: Basis;
   readonly method: 'minimax' | 'taylor' | 'economized';
+  /** What an error of the argument has changed the function by before the polynomial is evaluated. */
+  readonly inherited?: InheritedError;
 }
 
 export interface PolynomialFit {
@@ -131,7 +133,7 @@ function proofProblem(problem: PolynomialProblem, { target, basis }: Search): Pr
   const arithmetic: Arithmetic = { operations: problem.operations ?? problem.format, result: problem.format };
   const symmetric = basis !== 'all' && target.parity === basis && Q.equal(low, Q.negate(high)) && Q.isZero(target.zero);
   const inside = Q.compare(low, target.zero) <= 0 && Q.compare(target.zero, high) <= 0;
-  return { function: problem.function, variable: problem.variable, low, high, measure: problem.measure, arithmetic, centre: target.zero, through: inside, symmetric };
+  return { function: problem.function, variable: problem.variable, low, high, measure: problem.measure, arithmetic, centre: target.zero, through: inside, symmetric, ...(problem.inherited ? { inherited: problem.inherited } : {}) };
 }
 
 interface Candidate {
@@ -193,8 +195,9 @@ function bestProgram({ problem, search, proof }: Setting, found: Found, terms: r
   const { zero } = search.target;
   const polynomial = certifiedTerms(terms, proof, budget);
   let best = known;
-  for (const leadingApart of [false, true]) {
-    if (leadingApart && !canStandApart(terms)) continue;
+  const apart = canStandApart(terms);
+  // In ulp the last roundings decide: a leading term that is exact and added last is always the better one there.
+  for (const leadingApart of apart ? (problem.measure === 'ulp' ? [true] : [false, true]) : [false]) {
     const program = polynomialProgram(terms, variable, zero, { form, fma, leadingApart });
     const writtenProgram = problem.writtenFma === fma ? program : polynomialProgram(terms, variable, zero, { form, fma: problem.writtenFma, leadingApart });
     const next = { found, terms, polynomial, program, writtenProgram, proof: proveProgram(program, polynomial, proof, budget) };

@@ -3,7 +3,9 @@ import { boundDifference, type DifferenceBound, polynomialOf } from '../bound/in
 import { type Expression, Q, type Rational } from '../expression/index.ts';
 import { type Budget, Declined } from '../outcome.ts';
 import type { PolynomialTerm } from '../write/index.ts';
-import { absoluteError, type BinadeRun, binadeRuns, errorOf, errorPieces, relativeError } from './evaluationBound.ts';
+import { interval } from '../rigorous/index.ts';
+import { absoluteError, type BinadeRun, binadeRuns, errorPieces, relativeError } from './evaluationBound.ts';
+import { ERROR_BITS } from './evaluationError.ts';
 import { powerOfTwo, smallestNormal, unitRoundoff } from './format.ts';
 import type { Arithmetic, Program } from './program.ts';
 
@@ -23,6 +25,14 @@ export interface ProofProblem {
   readonly through: boolean;
   /** Function and polynomial are both even or both odd on a symmetric interval: one half says all. */
   readonly symmetric: boolean;
+  /** What an error of the argument, made before this polynomial is evaluated, has changed the function by already. */
+  readonly inherited?: InheritedError;
+}
+
+/** |f(computed argument) - f(argument)| at most `absolute`, and at most `relative` |f(argument)|; only the one that the measure needs is looked at. */
+export interface InheritedError {
+  readonly absolute: Rational;
+  readonly relative: Rational;
 }
 
 /** Errors in the measure, as rationals that bound from above. */
@@ -75,6 +85,13 @@ export interface CertifiedPolynomial {
 export const certified = (approximation: Expression, problem: ProofProblem, budget: Budget): CertifiedPolynomial => ({ approximation, whole: certify(approximation, problem, budget), parts: new Map() });
 export const certifiedTerms = (terms: readonly PolynomialTerm[], problem: ProofProblem, budget: Budget): CertifiedPolynomial => certified(polynomialOf(terms, problem.variable, problem.centre), problem, budget);
 
+/** The certified bound of |f - p| with the inherited error: r |f(y)| + |f(y) - f(x)| <= (r + e + r e) |f(x)|. */
+function withInherited(upper: Rational, { measure, inherited }: ProofProblem): Rational {
+  if (!inherited) return upper;
+  if (measure === 'absolute') return Q.add(upper, inherited.absolute);
+  return Q.add(upper, Q.multiply(inherited.relative, Q.add(Q.ONE, upper)));
+}
+
 /** Certified parts of an interval that one bound in ulp may rest on. */
 const MOST_PARTS = 12;
 
@@ -84,23 +101,35 @@ const SMALL = 2 ** -12;
 /** sup over the runs of (|p - f| + spent error) / ulp: the worst run is certified by itself until the worst one is certified. */
 function inUlp(polynomial: CertifiedPolynomial, runs: readonly BinadeRun[], problem: ProofProblem, withEvaluation: boolean, budget: Budget): Rational {
   // |p - f| <= r |f| and |f| <= |p| / (1 - r).
-  const coarse = Q.divide(polynomial.whole.upper, Q.subtract(Q.ONE, polynomial.whole.upper));
+  const r = withEvaluation ? withInherited(polynomial.whole.upper, problem) : polynomial.whole.upper;
+  const coarse = upward(Q.divide(r, Q.subtract(Q.ONE, r)));
+  const inherited = withEvaluation && problem.inherited ? Q.divide(problem.inherited.relative, Q.subtract(Q.ONE, r)) : Q.ZERO;
   const largest = runs.reduce((most, run) => Math.max(most, run.size), 0);
+  // Thousands of runs: their totals are doubles rounded up.
   const entries = runs.map((run) => {
-    const spent = withEvaluation ? Q.multiply(errorOf(run.error), powerOfTwo(-run.exponent)) : Q.ZERO;
-    return { run, spent, total: Q.add(Q.multiply(Q.multiply(coarse, fromBound(run.size)), powerOfTwo(-run.exponent)), spent), done: run.size < largest * SMALL };
+    const spent = withEvaluation ? scaledUp(run.error, -run.exponent - ERROR_BITS) : 0;
+    return { run, spent, total: interval.up(interval.up(coarse * scaledUp(run.size, -run.exponent)) + spent), done: run.size < largest * SMALL };
   });
   for (let parts = 0; parts < MOST_PARTS; parts += 1) {
-    const worst = entries.reduce<(typeof entries)[number] | null>((a, b) => (a && Q.compare(a.total, b.total) >= 0 ? a : b), null);
-    if (!worst || worst.done) return worst?.total ?? Q.ZERO;
+    const worst = entries.reduce<(typeof entries)[number] | null>((a, b) => (a && a.total >= b.total ? a : b), null);
+    if (!worst || worst.done) return fromBound(worst?.total ?? 0);
     const [low, high] = [Q.fromDouble(worst.run.low), Q.fromDouble(worst.run.high)];
     const key = `${worst.run.low}:${worst.run.high}`;
     const known = polynomial.parts.get(key) ?? certify(polynomial.approximation, problem, budget, 1.01, { low: greater(low, problem.low), high: Q.compare(high, problem.high) > 0 ? problem.high : high }).upper;
     polynomial.parts.set(key, known);
-    worst.total = Q.add(Q.multiply(known, powerOfTwo(-worst.run.exponent)), worst.spent);
+    worst.total = interval.up(upward(Q.multiply(Q.add(known, Q.multiply(inherited, fromBound(worst.run.size))), powerOfTwo(-worst.run.exponent))) + worst.spent);
     worst.done = true;
   }
-  return entries.reduce((most, e) => greater(most, e.total), Q.ZERO);
+  return fromBound(entries.reduce((most, e) => Math.max(most, e.total), 0));
+}
+
+const upward = (q: Rational): number => interval.fromRational(q).hi;
+
+/** x 2^k, rounded up where it is not exact; in two steps where 2^k alone has no double. */
+function scaledUp(x: number, k: number): number {
+  const half = Math.trunc(k / 2);
+  const value = x * 2 ** half * 2 ** (k - half);
+  return value === 0 || value < 2 ** -1000 ? (x === 0 ? 0 : interval.up(value)) : value;
 }
 
 export interface EvaluationProof {
@@ -113,13 +142,14 @@ export interface EvaluationProof {
 /** The total error of one program that evaluates the polynomial. Throws Declined where it can overflow or where no relative bound is known. */
 export function proveProgram(program: Program, polynomial: CertifiedPolynomial, problem: ProofProblem, budget: Budget): EvaluationProof {
   const { measure, arithmetic } = problem;
-  const upper = polynomial.whole.upper;
+  const certainly = polynomial.whole.upper;
+  const upper = withInherited(certainly, problem);
   const r = Q.toDouble(upper) * (1 + 2 ** -50);
   const sliver = measure === 'ulp' ? Math.min(2 * r + 2 ** -60, 2 ** -13) : 0;
   const pieces = errorPieces(program, problem.variable, arithmetic, { low: problem.symmetric ? Q.ZERO : problem.low, high: problem.high, centre: problem.centre, sliver }, budget);
   if (measure === 'absolute') {
     const spent = absoluteError(pieces);
-    return { total: Q.add(upper, spent), evaluation: spent, subnormal: null, runs: [] };
+    return { total: Q.add(upper, spent), evaluation: Q.add(spent, Q.subtract(upper, certainly)), subnormal: null, runs: [] };
   }
   if (!(r < 1)) throw new Declined('bad-request', 'The relative error of this polynomial reaches one; ask for a higher degree or the absolute measure.');
   const { relative, subnormal } = relativeError(pieces, r, arithmetic);
@@ -132,7 +162,7 @@ export function proveProgram(program: Program, polynomial: CertifiedPolynomial, 
   if (!Number.isFinite(relative)) throw new Declined('undecided', 'The rounding error relative to the function could not be bounded; ask for the absolute measure.');
   // |computed - f| <= |p - f| + e |p| <= (r + e (1 + r)) |f|.
   const spent = Q.multiply(fromBound(relative), Q.add(Q.ONE, upper));
-  return { total: Q.add(upper, spent), evaluation: spent, subnormal: below(subnormal, upper, problem), runs: [] };
+  return { total: Q.add(upper, spent), evaluation: Q.add(spent, Q.subtract(upper, certainly)), subnormal: below(subnormal, upper, problem), runs: [] };
 }
 
 const below = (evaluation: Rational | null, r: Rational, { arithmetic }: ProofProblem): Rational | null =>

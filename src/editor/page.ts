@@ -312,7 +312,7 @@ export class Page implements vscode.Disposable {
     const consultation = await this.#services.status.during(this.#services.consultant.consult(document, focus.place, DETAILS, this.#chosen));
     const proposals = await this.#services.consultant.proposals(document, consultation);
     if (turn !== this.#turn || document.version !== consultation.version) return;
-    const { answer, asked, sources, candidates } = consultation;
+    const { answer, asked, sources, candidates, unbounded } = consultation;
     this.#consultation = consultation;
     this.#stale = null;
     this.#proposals = proposals;
@@ -322,7 +322,7 @@ export class Page implements vscode.Disposable {
     }
     if (consultation.place) this.#focus = { uri: document.uri, place: consultation.place, text: document.getText(rangeOf(document, consultation.place.start, consultation.place.end)) };
     const origins = { variable: sourceName(sources.variable), point: sourceName(sources.point), interval: sourceName(sources.interval), tolerance: sourceName(sources.tolerance), terms: sourceName(sources.terms) };
-    this.#shown = { kind: 'expansion', answer, asked, sources, origins };
+    this.#shown = { kind: 'expansion', answer, asked, sources, origins, ...(unbounded === undefined ? {} : { unbounded }) };
     this.#remember(answer.text);
   }
 

@@ -8,6 +8,7 @@ import type { BoundAnswer, ExpandAnswer, ExpandRequest, LadderRow, NeededAnswer,
 import { readExact } from '../read/index.ts';
 import { remainderText, toPlain } from '../write/index.ts';
 import { readAllAssumptions } from './assumptions.ts';
+import type { MeasuredConstants } from './constants.ts';
 import type { Expander } from './expand.ts';
 import { plotAnswer } from './plot.ts';
 
@@ -16,16 +17,17 @@ const DEFAULT_TOLERANCE = Q.rational(1, 1000);
 const REACH_TERMS = [2, 3, 4];
 const LADDER_ROWS = 8;
 
-export function withBounds(answer: ExpandAnswer, expander: Expander, request: ExpandRequest, time: Budget): Outcome<ExpandAnswer> {
-  const assumptions = readAllAssumptions(request.assume);
-  if (!assumptions.ok) return assumptions;
+export function withBounds(answer: ExpandAnswer, expander: Expander, request: ExpandRequest, constants: MeasuredConstants, time: Budget): Outcome<ExpandAnswer> {
+  const told = readAllAssumptions(request.assume);
+  if (!told.ok) return told;
+  const assumptions = [...told.value, ...constants.values];
   const interval = intervalOf(request);
   if (interval && !interval.ok) return interval;
   const tolerance = toleranceOf(request.tolerance);
   if (!tolerance.ok) return tolerance;
   const measure = request.measure ?? 'absolute';
   const details = new Set(request.details ?? []);
-  const shared = { measure, assumptions: assumptions.value, budget: time };
+  const shared = { measure, assumptions, budget: time };
   let result: ExpandAnswer = answer;
   if (interval) {
     const bound = boundRemainder({ expansion: expander.first, interval: interval.value, ...shared });
@@ -48,12 +50,13 @@ export function withBounds(answer: ExpandAnswer, expander: Expander, request: Ex
   if (request.at !== undefined) {
     const argument = readExact(request.at);
     if (!argument.ok) return failure('bad-request', `The argument "${request.at}" cannot be read: ${argument.error.message}`);
-    const value = valueAt(expander.first, argument.value, assumptions.value, time);
+    const value = valueAt(expander.first, argument.value, assumptions, time);
     if (!value.ok) return value;
     const { value: f, sum, error, percentage } = value.value;
     result = { ...result, at: { argument: toPlain(argument.value), function: middle(f), sum: middle(sum), error: middle(error), percent: percentage ? middle(percentage) : null, enclosures: value.value } };
   }
-  return success(result);
+  const measured = result.bound !== undefined || result.reach !== undefined || result.at !== undefined;
+  return success(measured && constants.stated.length > 0 ? { ...result, assumptions: [...result.assumptions, ...constants.stated] } : result);
 }
 
 /** The common leading digits of an enclosure, for reading; the enclosure itself is in the answer beside it. */

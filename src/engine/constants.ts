@@ -1,5 +1,5 @@
 /** Constants that code defines beside an expression (`const double g = 9.81;`): symbols as they stand, or their values filled in. */
-import { build, dependsOn, type Expression, freeSymbols, substitute } from '../expression/index.ts';
+import { type Assumption, build, dependsOn, type Expression, freeSymbols, substitute } from '../expression/index.ts';
 import { type Outcome, success } from '../outcome.ts';
 import type { ConstantAnswer, ExpandRequest } from '../protocol.ts';
 import { rationalOf } from '../rigorous/index.ts';
@@ -43,8 +43,12 @@ export async function sourceOf(request: ConstantsRequest, tools: EngineTools, by
   if (found.length === 0) return source;
   const filled = (request.constants ?? byDefault) === 'values';
   const constants: readonly ConstantAnswer[] = found.map(({ name, value }) => ({ name, value: written(value), filled }));
-  return success({ ...source.value, constants, ...(filled ? { expression: filledIn(source.value.expression, found) } : {}) });
+  if (!filled) return success({ ...source.value, constants, knownValues: found.flatMap(({ name, value }) => equals(name, value)) });
+  return success({ ...source.value, constants, expression: filledIn(source.value.expression, found) });
 }
+
+/** As two inequalities: a range of one value. */
+const equals = (name: string, value: Expression): readonly Assumption[] => (['>=', '<='] as const).map((relation) => ({ kind: 'relation', left: build.symbol(name), relation, right: value }));
 
 /** A literal as it stands in the code, anything else in plain notation, fractions reduced. */
 function written(value: Expression): string {
@@ -55,3 +59,14 @@ function written(value: Expression): string {
 
 /** The values filled in, as a result states them: `g = 981/100`. */
 export const filledConstants = ({ constants }: SourceFormula): readonly string[] => (constants ?? []).filter((c) => c.filled).map(({ name, value }) => `${name} = ${value}`);
+
+/** Values of constants that stay symbols in the sum but are numbers in what is measured. */
+export interface MeasuredConstants {
+  readonly values: readonly Assumption[];
+  /** What a bound or value rests on then. */
+  readonly stated: readonly string[];
+}
+export const measuredConstants = ({ constants, knownValues }: SourceFormula): MeasuredConstants => ({
+  values: knownValues ?? [],
+  stated: knownValues ? (constants ?? []).map(({ name, value }) => `${name} = ${value} in the bounds and values`) : [],
+});

@@ -9,7 +9,7 @@ import { withBounds } from './bounds.ts';
 import { expansionAnswer } from './expansionAnswer.ts';
 import { targetOf } from './conditions.ts';
 import { differentialQuestion, solverOf } from './differential.ts';
-import { filledConstants, sourceOf } from './constants.ts';
+import { filledConstants, measuredConstants, sourceOf } from './constants.ts';
 import { equationOf, functionOf, pointOf, questionOf, readPoint, variableOf } from './question.ts';
 import { insertionAnswer } from './insertion.ts';
 import { integralAnswer } from './integralValue.ts';
@@ -108,7 +108,7 @@ export async function askExpand(request: ExpandRequest, tools: EngineTools, time
   const reading = request.details?.includes('reading') ? { reading: readingAnswer(request, source.value, expander.value.first) } : {};
   const place = { document: request.text, language: request.language, expression: request.text.slice(source.value.start, source.value.end) };
   const insertion = request.details?.includes('insertion') ? { insertion: insertionAnswer(expander.value.first, place) } : {};
-  return withBounds({ ...answer, ...reading, ...insertion }, expander.value, request, time);
+  return withBounds({ ...answer, ...reading, ...insertion }, expander.value, request, measuredConstants(source.value), time);
 }
 
 /** In a document a failure names the place of the expression, and what it could be expanded in. */

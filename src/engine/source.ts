@@ -1,5 +1,5 @@
 /** The formula that a request is about, read from its text in whatever language it stands. */
-import type { Expression } from '../expression/index.ts';
+import type { Assumption, Expression } from '../expression/index.ts';
 import { failure, type Outcome, success } from '../outcome.ts';
 import type { ConstantAnswer, ExpandRequest } from '../protocol.ts';
 import { type Candidate, candidates, codeLanguage, type CodeReading, isTruncated, locate, macrosOf, type MacroTable, orderTerms, readFormula, readVariable, type Surroundings } from '../read/index.ts';
@@ -24,6 +24,8 @@ export interface SourceFormula {
   readonly code?: CodeReading;
   /** Constants defined beside it that stand in it, or were filled in. */
   readonly constants?: readonly ConstantAnswer[];
+  /** Their values where they stay symbols: what is measured (a bound, a value) may use them. */
+  readonly knownValues?: readonly Assumption[];
 }
 
 export type SourceRequest = Pick<ExpandRequest, 'text' | 'language' | 'selection' | 'variable' | 'unknown' | 'files'>;

@@ -30,7 +30,7 @@ export function expansionSection(shown: Expanded, into: HTMLElement, width: numb
       },
       choose,
     ),
-    facts(answer, asked),
+    facts(answer, asked, shown.unbounded),
     ladder(answer, asked, choose),
     plots(answer, asked, width),
     ...details(answer),
@@ -42,12 +42,13 @@ function formula(answer: ExpandAnswer): HTMLElement {
   return h('div', { class: 'formula', id: 'formula', tabindex: '0', role: 'group', 'aria-label': answer.text }, math(`${left}${left ? '= ' : ''}${answer.latex}`, true), answer.left && h('div', { class: 'other' }, h('span', { class: 'muted' }, t('left2')), math(answer.left.latex, true)));
 }
 
-function facts(answer: ExpandAnswer, asked: Question): HTMLElement {
+function facts(answer: ExpandAnswer, asked: Question, noBound: string | undefined): HTMLElement {
   const lines: Child[] = [];
   const add = (text: Child, kind = ''): void => void lines.push(h('p', { class: kind || null }, text));
   if (answer.exact) add(t('exact'), 'good');
   if (answer.divergent) add(t('divergent'), 'caution');
   if (answer.oscillating) add(t('oscillating'));
+  if (noBound) add(noBound, 'caution');
   if (answer.bound) {
     if (answer.bound.value === null) add(t('unbounded', answer.bound.place ?? '?'), 'caution');
     else add([h('span', { class: 'muted' }, `${asked.interval ? t('boundOn', ...asked.interval.map((end) => end.replaceAll('-', '−'))) : t('bound')} `), h('strong', { id: 'bound', title: answer.bound.value }, shortened(answer.bound.value, 'above')), answer.bound.factor ? [' · ', h('code', {}, answer.bound.factor)] : against(answer.bound.value, asked.tolerance)]);

@@ -29,7 +29,7 @@ export interface CodeControls {
 export type Shown =
   | { readonly kind: 'nothing' }
   | { readonly kind: 'failure'; readonly message: string; readonly candidates: readonly string[]; readonly asked: Question }
-  | { readonly kind: 'expansion'; readonly answer: ExpandAnswer; readonly asked: Question; readonly sources: Sources; readonly origins: Origins }
+  | { readonly kind: 'expansion'; readonly answer: ExpandAnswer; readonly asked: Question; readonly sources: Sources; readonly origins: Origins; /** Why there is no bound on the interval asked for. */ readonly unbounded?: string }
   | { readonly kind: 'fit'; readonly answer: FitAnswer | ErrorAnswer | null; readonly controls: CodeControls }
   | { readonly kind: 'guard'; readonly answer: GuardAnswer | ErrorAnswer | null; readonly controls: CodeControls }
   | { readonly kind: 'claims'; readonly summary: string; readonly rows: readonly ClaimRow[] };

@@ -43,6 +43,11 @@ describe('constants of the code around', () => {
     const answer = await ask({ language: 'c', interval: ['0', '1/10'], tolerance: '1e-4', ...at(C, 'exp(g*t)/l') });
     expect(answer).toMatchObject({ ok: true, assumptions: expect.arrayContaining(['g = 9.81']) as unknown });
   });
+  it('are numbers in a bound, which says so', async () => {
+    const answer = await ask({ ask: 'expand', variable: 't', terms: 2, interval: ['0', '1/100'], language: 'c', ...at(C, 'exp(g*t)/l') });
+    // e^{gt} - 1 - gt is largest at the end: (e^{0.0981} - 1.0981)/19.62 = 2.5345e-4 (by hand).
+    expect(answer).toMatchObject({ ok: true, assumptions: expect.arrayContaining(['g = 9.81 in the bounds and values']) as unknown, bound: { value: expect.stringMatching(/^0\.00025/) as unknown } });
+  });
   it('cannot be anything else', async () => {
     expect(await ask({ ask: 'expand', constants: 'numbers', text: 'x' })).toMatchObject({ ok: false, error: { code: 'bad-request' } });
   });

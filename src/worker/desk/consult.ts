@@ -34,7 +34,7 @@ export async function consult(request: ConsultRequest, engine: Engine): Promise<
   ];
   for (const { question, variable } of tries) {
     if (variable === 'setting' && !mentions(text, question.variable ?? '', selection.start, selection.end)) continue;
-    const answer = (await engine.ask(toRequest(request, question))) as ExpandAnswer | ErrorAnswer;
+    const { answer, unbounded } = await expansionAnyway(request, question, engine);
     if (!answer.ok && variable === 'setting') continue;
     const reading = answer.ok ? answer.reading : undefined;
     return {
@@ -43,10 +43,20 @@ export async function consult(request: ConsultRequest, engine: Engine): Promise<
       sources: complete(question, { ...sources, variable }, request),
       place: reading ? { start: reading.start, end: reading.end } : placeOf(answer, request),
       candidates: (answer.ok ? reading?.candidates : answer.error.candidates) ?? [],
+      ...(unbounded === undefined ? {} : { unbounded }),
       worthwhile: !answer.ok || Object.keys(above).length > 0 || saysSomething(answer),
     };
   }
   return declined('Nothing could be asked about this place; select an expression.');
+}
+
+/** Where a bound cannot be had (a parameter without range, an interval that leaves the domain) the expansion is still worth showing, with the reason beside it. */
+async function expansionAnyway(request: ConsultRequest, question: Question, engine: Engine): Promise<{ readonly answer: ExpandAnswer | ErrorAnswer; readonly unbounded?: string }> {
+  const answer = (await engine.ask(toRequest(request, question))) as ExpandAnswer | ErrorAnswer;
+  if (answer.ok || question.interval === undefined || !['needs-assumption', 'undecided', 'bad-request', 'over-budget'].includes(answer.error.code)) return { answer };
+  const { interval: _interval, ...rest } = question;
+  const plain = (await engine.ask(toRequest(request, rest))) as ExpandAnswer | ErrorAnswer;
+  return plain.ok ? { answer: plain, unbounded: answer.error.message } : { answer };
 }
 
 const declined = (message: string): ConsultAnswer => ({ answer: { ok: false, error: { code: 'bad-request', message } }, asked: {}, sources: {}, place: null, candidates: [], worthwhile: false });

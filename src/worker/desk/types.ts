@@ -54,6 +54,8 @@ export interface ConsultAnswer {
   readonly candidates: readonly string[];
   /** False where the expression is its own expansion, so that a hover would say nothing. */
   readonly worthwhile: boolean;
+  /** Why there is no bound although an interval was given: the engine's sentence. */
+  readonly unbounded?: string;
 }
 
 export interface TextEdit extends Place {

@@ -1,5 +1,6 @@
 /** Taylor coefficients of polygamma functions at a real centre by Hurwitz zeta values, and their remainder on a real interval. */
 import { type Ball, real } from '../rigorous/index.ts';
+import type { RealSeries } from './holonomic.ts';
 
 /**
  * zeta(s, a) = sum_(j>=0) (a + j)^-s for integers s >= 2 and a > 0, by Euler-Maclaurin summation (DLMF 25.11.28 with real s > 0: the remainder lies between zero and
@@ -66,12 +67,6 @@ function digammaAt(a: Ball, precision: number): Ball | null {
     power = real.multiply(power, square, work);
   }
   return null;
-}
-
-export interface RealSeries {
-  readonly coefficients: readonly Ball[];
-  /** Encloses f^(K)(xi)/K! for every xi in the interval, K the number of coefficients. */
-  readonly remainder: Ball;
 }
 
 /** psi^(m)(c + d) = sum_k (-1)^(m+1+k) (m+k)!/k! zeta(m+k+1, c) d^k, psi^(0) = psi; remainder by zeta(s, xi) <= xi^-s + xi^(1-s)/(s-1). */

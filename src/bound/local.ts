@@ -57,8 +57,8 @@ export function denominatorOf(expansion: Expansion): number | null {
   return q > 60n ? null : Number(q);
 }
 
-/** f about the local end of a segment, with the whole segment as domain: s = 1 at the far end. */
-export function localModel<T>(segment: Segment, to: Expression | null, n: Numbers<T>, variable: string, length: number, q: number, check: () => void): Local<T> | null {
+/** The variable about the local end of a segment, with the whole segment as domain: s = 1 at the far end. */
+export function localDomain<T>(segment: Segment, n: Numbers<T>, length: number, q: number): Omit<Local<T>, 'f'> | null {
   const { r } = n;
   const infinite = segment.local === 'upper' ? segment.upper === null || segment.expansion.point === 'inf' : segment.lower === null || segment.expansion.point === '-inf';
   const m = modelArithmetic(r, n.unitRight, length, true, r);
@@ -71,32 +71,35 @@ export function localModel<T>(segment: Segment, to: Expression | null, n: Number
     if (start === null || r.containsZero(start)) return null;
     // x = start / s^q; the end nearer to infinity is s = (start/near)^(1/q).
     const leaf = m.polynomial([start], -q);
-    const f = logModelOf(segment.expansion.function, n, m, variable, leaf, undefined, check);
     const scale = r.divide(r.one, start);
-    if (f === null || scale === null) return null;
+    if (scale === null) return null;
     const nearValue = near === null ? null : n.value(near);
     const ratio = nearValue === null ? r.zero : r.divide(start, nearValue);
     const from = ratio === null ? null : q === 1 ? ratio : r.root(r.maximum(ratio, r.zero), q);
-    return from === null ? null : { m, f, leaf, from, to: r.one, scale: r.absolute(scale), denominator: q, sign: r.isPositive(scale) ? 1 : -1 };
+    return from === null ? null : { m, leaf, from, to: r.one, scale: r.absolute(scale), denominator: q, sign: r.isPositive(scale) ? 1 : -1 };
   }
   const centreTree = segment.local === 'lower' ? segment.lower : segment.upper;
-  const farTree = to ?? (segment.local === 'lower' ? segment.upper : segment.lower);
+  const farTree = segment.local === 'lower' ? segment.upper : segment.lower;
   if (centreTree === null || farTree === null) return null;
   const [centre, far] = [n.value(centreTree), n.value(farTree)];
   if (centre === null || far === null) return null;
   const scale = r.absolute(r.subtract(far, centre));
   const leaf = m.polynomial([centre, ...zeros, sideSign > 0 ? scale : r.negate(scale)]);
-  const vanishes = (e: Expression): boolean => {
-    if (r.isZero(centre) && r.isPoint(centre)) return false;
-    return isExactlyZero(substitutePoint(e, variable, centreTree), []);
-  };
-  const f = logModelOf(segment.expansion.function, n, m, variable, leaf, vanishes, check);
-  if (f === null) return null;
   const sign = segment.expansion.side === 'left' ? (sideSign > 0 ? -1 : 1) : sideSign;
-  return { m, f, leaf, from: r.zero, to: r.one, scale, denominator: q, sign };
+  return { m, leaf, from: r.zero, to: r.one, scale, denominator: q, sign };
 }
 
-const substitutePoint = (e: Expression, variable: string, point: Expression): Expression => substitute(e, variable, point);
+/** f about the local end of a segment, on its local domain. */
+export function localModel<T>(segment: Segment, n: Numbers<T>, variable: string, length: number, q: number, check: () => void): Local<T> | null {
+  const { r } = n;
+  const domain = localDomain(segment, n, length, q);
+  if (domain === null) return null;
+  const place = domain.leaf.valuation < 0 ? null : segment.local === 'lower' ? segment.lower : segment.upper;
+  const centre = place && n.value(place);
+  const vanishes = place && !(centre && r.isZero(centre) && r.isPoint(centre)) ? (e: Expression): boolean => isExactlyZero(substitute(e, variable, place), []) : undefined;
+  const f = logModelOf(segment.expansion.function, n, domain.m, variable, domain.leaf, vanishes, check);
+  return f && { ...domain, f };
+}
 
 /**
  * The model of f - sum where the local end is the point of expansion: the terms of the sum are coefficients of f, so what is left is the rest of them.

@@ -5,12 +5,13 @@ import { Declined } from '../outcome.ts';
 import { describe } from '../functions/index.ts';
 import { type Ball, enclose, type LogModel, logRange, type Model, real } from '../rigorous/index.ts';
 import { scaleOut } from './homogeneous.ts';
-import { denominatorOf, type Local, localModel, logModelOf, remainderAtPoint, sumOf } from './local.ts';
+import { denominatorOf, type Local, localDomain, localModel, logModelOf, remainderAtPoint, sumOf } from './local.ts';
 import { ballNumbers, doubles, type Numbers, type ParameterBalls, withValues } from './numbers.ts';
 import { type PieceTask, refinePieces, remainderAt } from './pieces.ts';
 import { provenPlace } from './singular.ts';
 import { parameterBalls, type Segment, segmentsOf } from './region.ts';
 import { supremumOfModel } from './supremum.ts';
+import { waveDifference } from './waves.ts';
 import type { BoundProblem, Measure, RemainderBound } from './types.ts';
 
 /** Upper over lower bound that counts as settled. */
@@ -221,6 +222,8 @@ function run<T>(numbers: Numbers<T>, given: readonly Segment[], problem: BoundPr
       if (y !== null) raise(r.lowerEnd(r.absolute(y)));
     }
   }
+  // Where the remainder oscillates its largest value may be anywhere in the first periods.
+  for (const segment of segments) if (segment.expansion.oscillating) for (const y of samplesNear(segment, n, options)) raise(r.lowerEnd(r.absolute(y)));
   const show = (x: T): string => {
     const ball = n.toBall(x);
     return ball === null ? '?' : real.toDecimalUp(ball, 5);
@@ -271,6 +274,23 @@ function run<T>(numbers: Numbers<T>, given: readonly Segment[], problem: BoundPr
   return u === null || l === null ? null : { upper: u, lower: l, steps, method: [...methods].join(' and ') };
 }
 
+const SAMPLES = 40;
+/** f - sum at arguments from the finite end of a segment on, as far as three times its distance from zero. */
+function samplesNear<T>(segment: Segment, n: Numbers<T>, options: { readonly variable: string; readonly measure: Measure }): readonly T[] {
+  const { r } = n;
+  const [lower, upper] = [segment.lower, segment.upper].map((end) => (end === null ? null : n.value(end)));
+  const start = lower ?? upper;
+  if (!start) return [];
+  const task = { expansion: segment.expansion, sum: sumOf(segment.expansion) };
+  const values: T[] = [];
+  for (let k = 1; k <= SAMPLES; k += 1) {
+    const x = lower && upper ? r.add(lower, r.multiply(r.subtract(upper, lower), r.fromRational(Q.rational(k, SAMPLES + 1)))) : r.multiply(start, r.fromRational(Q.rational(2 * k + SAMPLES, SAMPLES)));
+    const y = remainderAt(r.midpoint(x), task, n, options);
+    if (y !== null) values.push(y);
+  }
+  return values;
+}
+
 interface Memory {
   readonly cache: ModelCache;
   readonly lengthHint: number;
@@ -282,7 +302,7 @@ function remembered<T>(part: Segment, key: string, n: Numbers<T>, variable: stri
   const known = memory.cache.get(full);
   if (known && known.length >= length) return known.local as Local<T> | null;
   const wanted = known ? Math.max(length, memory.lengthHint) : length;
-  const local = localModel(part, null, n, variable, wanted, q, check);
+  const local = localModel(part, n, variable, wanted, q, check);
   memory.cache.set(full, { length: wanted, local });
   return local;
 }
@@ -467,11 +487,12 @@ function reachesLocalEnd(segment: Segment): boolean {
 function byDifference<T>(segment: Segment, sum: Expression, n: Numbers<T>, problem: BoundProblem, variable: string, lower: T, check: () => void): Near<T> | Unbounded | null {
   const { r } = n;
   const settled = (x: T): boolean => !r.isPositive(r.subtract(x, lower));
+  if (segment.expansion.oscillating && problem.measure === 'absolute') return byWaves(segment, sum, n, variable, lower, check);
   for (let cut = 0; cut < 12; cut += 1) {
     const part = cutSegment(segment, cut);
     for (const q of [1, 2, 3, 4]) {
       check();
-      const local = localModel(part.near, null, n, variable, 30, q, check);
+      const local = localModel(part.near, n, variable, 30, q, check);
       if (local === null) continue;
       const s = logModelOf(sum, n, local.m, variable, local.leaf, undefined, check);
       if (s === null) continue;
@@ -500,6 +521,24 @@ function byDifference<T>(segment: Segment, sum: Expression, n: Numbers<T>, probl
       const limit = r.multiply(r.maximum(lower, result.lower), r.fromRational({ num: BigInt(Math.round(SETTLED * 2 ** 30) - 2 ** 19), den: 1n << 30n }));
       if (!r.isPositive(r.subtract(result.upper, limit)) || cut === 11) return done(result.upper, result.lower);
       break;
+    }
+  }
+  return null;
+}
+
+/** The far part of an interval that ends at infinity, where f and the sum oscillate: the amplitudes of their difference, cut off where they are below what is known from the near part. */
+function byWaves<T>(segment: Segment, sum: Expression, n: Numbers<T>, variable: string, lower: T, check: () => void): Near<T> | null {
+  const { r } = n;
+  for (let cut = 0; cut < 10; cut += 1) {
+    const part = cutSegment(segment, cut);
+    for (const q of [1, 2, 4]) {
+      check();
+      const domain = localDomain(part.near, n, 30, q);
+      const found = domain && waveDifference(segment.expansion.function, sum, n, domain.m, variable, domain.leaf, check);
+      if (!found) continue;
+      if (r.isPositive(r.subtract(found, lower)) && cut < 9) break;
+      const rest = part.rest === null ? null : wholeTask(part.rest, sum, n);
+      return { kind: 'bounded', upper: found, lower, rest, steps: (show) => [`Beyond ${part.rest === null ? 'the start of the interval' : `2^${cut} times its start`} f - sum = A + B cos(phi) + C sin(phi) with enveloping series as amplitudes (DLMF 6.12(ii), 7.12(ii), 9.7(iii), 10.17(iii)); |A| + sqrt(B^2 + C^2) is at most ${show(found)} there.`] };
     }
   }
   return null;

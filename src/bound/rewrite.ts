@@ -11,7 +11,10 @@ const gammaConstant = constant('eulerGamma');
 const MOST_STEPS = 60;
 
 /** Names of series that only bound/ knows: formal series at infinity whose remainder lies between zero and the first term left out. */
-export const ENVELOPES = ['enveloping log gamma', 'enveloping digamma', 'enveloping erfc', 'enveloping exponential integral', 'enveloping Bessel K', 'enveloping Airy'] as const;
+export const ENVELOPES = [
+  'enveloping log gamma', 'enveloping digamma', 'enveloping polygamma', 'enveloping erfc', 'enveloping exponential integral', 'enveloping incomplete gamma', 'enveloping Ei', 'enveloping Bessel K', 'enveloping Bessel I',
+  'enveloping Bessel P', 'enveloping Bessel Q', 'enveloping Airy', 'enveloping sine integral f', 'enveloping sine integral g', 'enveloping Fresnel f', 'enveloping Fresnel g',
+] as const;
 export type EnvelopeName = (typeof ENVELOPES)[number];
 
 /** The call written differently, or null. `models` are those of the arguments. */
@@ -67,6 +70,25 @@ function nearZero(id: string, args: readonly Expression[], x: Expression, sign: 
       return ownLog && difference(sum(gammaConstant, ownLog), call('ein', negation(x)));
     case 'cosIntegral':
       return sign > 0 && ownLog ? difference(sum(gammaConstant, ownLog), call('cin', x)) : null;
+    case 'struveH':
+    case 'struveL': {
+      // DLMF 11.2.1, 11.2.2.
+      const [order] = args;
+      if (order?.kind !== 'number') return null;
+      const raised = number(Q.add(order.value, Q.rational(3, 2)));
+      const square = quotient(power(x, 2), number(4));
+      const series = call('hypergeometric', number(1), number(2), number(1), number({ num: 3n, den: 2n }), raised, id === 'struveH' ? negation(square) : square);
+      return quotient(product(power(quotient(x, number(2)), Q.add(order.value, Q.ONE)), series), product(call('gamma', number({ num: 3n, den: 2n })), call('gamma', raised)));
+    }
+    case 'dawson':
+      // DLMF 7.5.1 with 7.11.4 and 13.2.39.
+      return product(x, call('hypergeometric', number(1), number(1), number(1), number({ num: 3n, den: 2n }), negation(power(x, 2))));
+    case 'ellipticKParameter':
+    case 'ellipticEParameter': {
+      // DLMF 19.5.1, 19.5.2.
+      const half = number({ num: 1n, den: 2n });
+      return product(quotient(constant('pi'), number(2)), call('hypergeometric', number(2), number(1), id === 'ellipticKParameter' ? half : negation(half), half, number(1), x));
+    }
     case 'coshIntegral':
       return sign > 0 && ownLog ? difference(sum(gammaConstant, ownLog), quotient(sum(call('ein', x), call('ein', negation(x))), number(2))) : null;
     case 'expIntegralE': {
@@ -99,6 +121,33 @@ function atInfinity(id: string, args: readonly Expression[], x: Expression, sign
     case 'digamma':
       // DLMF 5.11.2.
       return sign > 0 ? sum(log(x), negation(quotient(number(1), product(number(2), x))), call('enveloping digamma', x)) : null;
+    case 'polygamma': {
+      // DLMF 5.15.8: (-1)^(n+1) psi^(n)(x) = (n-1)!/x^n + n!/(2 x^(n+1)) + sum B_2k (2k+n-1)!/((2k)! x^(2k+n)).
+      const [order] = args;
+      if (sign <= 0 || order?.kind !== 'number' || !Q.isInteger(order.value) || order.value.num < 1n || order.value.num > 40n) return null;
+      const n = Number(order.value.num);
+      let factorial = 1n;
+      for (let i = 2; i < n; i += 1) factorial *= BigInt(i);
+      const series = sum(quotient(number(factorial), power(x, n)), quotient(number(factorial * BigInt(n)), product(number(2), power(x, n + 1))), quotient(call('enveloping polygamma', order, x), power(x, n)));
+      return n % 2 === 1 ? series : negation(series);
+    }
+    case 'upperGamma':
+      // DLMF 8.11.2.
+      return sign > 0 && args[0] ? product(exp(negation(x)), power(x, difference(args[0], number(1))), call('enveloping incomplete gamma', args[0], x)) : null;
+    case 'besselI': {
+      // DLMF 10.34.2 with m = 1 and 10.40.2, real parts taken: I = e^x/sqrt(2 pi x) (sum + remainder) - sin(nu pi)/pi K.
+      const [order] = args;
+      if (sign <= 0 || !order) return null;
+      const main = product(quotient(exp(x), squareRoot(product(number(2), constant('pi'), x))), call('enveloping Bessel I', order, x));
+      if (order.kind === 'number' && Q.isInteger(order.value)) return main;
+      return difference(main, product(quotient(call('sin', product(order, constant('pi'))), constant('pi')), call('besselK', order, x)));
+    }
+    case 'airyBi': {
+      // Bi(x) = sqrt(x/3) (I_(1/3) + I_(-1/3))(2/3 x^(3/2)) (DLMF 9.6.4): the parts with K cancel.
+      if (sign <= 0) return null;
+      const zeta = product(number({ num: 2n, den: 3n }), power(x, { num: 3n, den: 2n }));
+      return product(quotient(exp(zeta), product(squareRoot(constant('pi')), power(x, { num: 1n, den: 4n }))), call('enveloping Bessel I', number({ num: 1n, den: 3n }), zeta));
+    }
     case 'erfc':
       // DLMF 7.12.1.
       if (sign > 0) return product(quotient(exp(negation(power(x, 2))), product(x, squareRoot(constant('pi')))), call('enveloping erfc', x));
@@ -110,6 +159,8 @@ function atInfinity(id: string, args: readonly Expression[], x: Expression, sign
       // DLMF 8.20.2.
       return sign > 0 && args[0] ? product(quotient(exp(negation(x)), x), call('enveloping exponential integral', args[0], x)) : null;
     case 'expIntegralEi':
+      // DLMF 6.12.2.
+      if (sign > 0) return product(quotient(exp(x), x), call('enveloping Ei', x));
       return sign < 0 ? negation(call('expIntegralE', number(1), negation(x))) : null;
     case 'besselK':
       // DLMF 10.40.2.
@@ -119,6 +170,61 @@ function atInfinity(id: string, args: readonly Expression[], x: Expression, sign
       return sign > 0
         ? product(quotient(exp(negation(product(number({ num: 2n, den: 3n }), power(x, { num: 3n, den: 2n })))), product(number(2), squareRoot(constant('pi')), power(x, { num: 1n, den: 4n }))), call('enveloping Airy', x))
         : null;
+    default:
+      return null;
+  }
+}
+
+const pi = constant('pi');
+const third = number({ num: 1n, den: 3n });
+
+/** Functions that oscillate at infinity as sums of sines and cosines with enveloping series as amplitudes; null for all others. `sign` is that of the argument. */
+export function oscillatingForm(id: string, args: readonly Expression[], sign: 1 | -1): Expression | null {
+  const x = args[args.length - 1];
+  if (x === undefined) return null;
+  const hankel = (order: Expression, z: Expression, phase: Expression, kind: 'J' | 'Y'): Expression => {
+    // DLMF 10.17.3, 10.17.4.
+    const [c, s] = [call('cos', phase), call('sin', phase)];
+    const [P, R] = [call('enveloping Bessel P', order, z), call('enveloping Bessel Q', order, z)];
+    return kind === 'J' ? difference(product(c, P), product(s, R)) : sum(product(s, P), product(c, R));
+  };
+  switch (id) {
+    case 'besselJ':
+    case 'besselY': {
+      const [order] = args;
+      const value = order?.kind === 'number' ? order.value : null;
+      if (sign < 0 || !order || !value || value.num < 0n) return null;
+      const phase = difference(x, product(number(Q.add(Q.multiply(value, Q.HALF), Q.rational(1, 4))), pi));
+      return product(squareRoot(quotient(number(2), product(pi, x))), hankel(order, x, phase, id === 'besselJ' ? 'J' : 'Y'));
+    }
+    case 'airyAi':
+    case 'airyBi': {
+      // DLMF 9.7.9, 9.7.11; the two series are those of order 1/3 in zeta (9.6.6, 9.6.8 with 10.17.5).
+      if (sign > 0) return null;
+      const z = negation(x);
+      const zeta = product(number({ num: 2n, den: 3n }), power(z, { num: 3n, den: 2n }));
+      const phase = difference(zeta, quotient(pi, number(4)));
+      const wave = id === 'airyAi' ? hankel(third, zeta, phase, 'J') : negation(hankel(third, zeta, phase, 'Y'));
+      return quotient(wave, product(squareRoot(pi), power(z, { num: 1n, den: 4n })));
+    }
+    case 'sinIntegral':
+    case 'cosIntegral': {
+      // DLMF 6.2.19, 6.2.20.
+      if (sign < 0) return id === 'sinIntegral' ? negation(call(id, negation(x))) : null;
+      const [f, g] = [call('enveloping sine integral f', x), call('enveloping sine integral g', x)];
+      const [c, s] = [call('cos', x), call('sin', x)];
+      return id === 'sinIntegral' ? difference(quotient(pi, number(2)), sum(product(f, c), product(g, s))) : difference(product(f, s), product(g, c));
+    }
+    case 'fresnelS':
+    case 'fresnelC': {
+      // DLMF 7.5.3, 7.5.4.
+      if (sign < 0) return negation(call(id, negation(x)));
+      const phase = quotient(product(pi, power(x, 2)), number(2));
+      const [f, g] = [call('enveloping Fresnel f', x), call('enveloping Fresnel g', x)];
+      const [c, s] = [call('cos', phase), call('sin', phase)];
+      const wave = id === 'fresnelC' ? difference(product(f, s), product(g, c)) : negation(sum(product(f, c), product(g, s)));
+      return sum(number({ num: 1n, den: 2n }), quotient(wave, product(pi, x)));
+    }
     default:
       return null;
   }

@@ -4,10 +4,11 @@
  * (Trefethen & Weideman, SIAM Rev. 56 (2014), theorem 2.1); the rest of the series is at most B (D/R)^K/(1 - D/R) on |d| <= D. Both need f analytic on |d| <= R:
  * the list below says where each function is, from its definition.
  */
-import { build, type Expression } from '../expression/index.ts';
+import { build, type Expression, structureKey } from '../expression/index.ts';
 import { describe } from '../functions/index.ts';
 import { type Ball, complex, type ComplexBall, enclose, interval, type Model, type ModelArithmetic, real } from '../rigorous/index.ts';
 import { polygammaSeries } from './gammaSeries.ts';
+import { equationSeries, hypergeometricAtZero, type RealSeries } from './holonomic.ts';
 import type { Numbers } from './numbers.ts';
 
 /** Where f is analytic in its varying argument: everywhere, off (-inf, end], or off [end, inf). */
@@ -104,9 +105,12 @@ export function specialModel<T>(id: string, args: readonly Expression[], models:
     const value = exponentialIntegralModel(args, argument, n, m);
     if (value !== null) return value;
   }
-  const domain = domainOf(id, args, index);
   const u = m.regular(argument);
-  if (domain === null || u === null || !describe(id)?.enclose) return null;
+  if (u === null) return null;
+  const byEquation = equationModel(id, args, index, argument, u, n, m);
+  if (byEquation !== null) return byEquation;
+  const domain = domainOf(id, args, index);
+  if (domain === null || !describe(id)?.enclose) return null;
   const centre = u.coefficients[0] ?? r.zero;
   const ball = n.toBall(centre);
   const parameters: ComplexBall[] = [];
@@ -142,6 +146,31 @@ export function specialModel<T>(id: string, args: readonly Expression[], models:
 }
 
 const up = (x: number): number => interval.up(x);
+
+/** By the function's own differential equation, or its hypergeometric series where the argument tends to zero. */
+function equationModel<T>(id: string, args: readonly Expression[], index: number, argument: Model<T>, u: Model<T>, n: Numbers<T>, m: ModelArithmetic<T>): Model<T> | null {
+  const { r } = n;
+  const precision = n.precision <= 53 ? 64 : n.precision;
+  const atZero = argument.valuation > 0;
+  if (atZero && id !== 'hypergeometric') return null;
+  const offset = atZero ? argument : withoutConstant(m, u);
+  const spread = m.rangeOf(offset);
+  const [centre, reach] = [n.toBall(u.coefficients[0] ?? r.zero), spread && n.toBall(r.upperEnd(r.absolute(spread)))];
+  if (centre === null || reach === null) return null;
+  let series: RealSeries | null;
+  if (atZero) series = hypergeometricAtZero(args, reach, precision, Math.max(2, Math.ceil(m.length / argument.valuation) + 1));
+  else {
+    const environment = new Map<string, Ball>();
+    for (const [name, set] of n.parameters) {
+      const ball = n.toBall(set);
+      if (ball !== null) environment.set(name, ball);
+    }
+    const constants = args.map((arg, k) => (k === index ? '' : structureKey(arg)));
+    const values = [...environment].map(([name, ball]) => (constants.some((c) => c.includes(name)) ? `${name}=${ball.mid},${ball.rad},${ball.exp}` : '')).filter((v) => v !== '');
+    series = equationSeries(id, args, index, centre, reach, environment, `${id}|${index}|${constants.join(';')}|${values.join(';')}`, precision, m.length);
+  }
+  return series && hornerWithTail(series.coefficients.map((c) => n.fromBall(c)), n.fromBall(series.remainder), offset, n, m);
+}
 
 function withoutConstant<T>(m: ModelArithmetic<T>, u: Model<T>): Model<T> {
   const rest = m.polynomial([m.a.zero, ...u.coefficients.slice(1)]);

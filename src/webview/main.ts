@@ -55,7 +55,7 @@ function draw(): void {
   const again = focused ? document.getElementById(focused) : null;
   if (again) {
     again.focus({ preventScroll: true });
-    if (typed && again instanceof HTMLInputElement && typed.value !== typed.given) {
+    if (typed && again instanceof HTMLInputElement && again.type === 'text' && typed.value !== typed.given) {
       again.value = typed.value;
       again.setSelectionRange(typed.from, typed.to);
     }

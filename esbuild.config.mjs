@@ -41,6 +41,7 @@ const bundles = [
   { ...forNode, entryPoints: ['src/editor/main.node.ts'], outfile: 'dist/extension.js' },
   { ...forBrowser, entryPoints: ['src/editor/main.web.ts'], outfile: 'dist/extension.web.js' },
   { ...forNode, entryPoints: ['src/worker/node.ts'], outfile: 'dist/worker.js' },
+  { ...forNode, entryPoints: ['src/worker/boot.ts'], outfile: 'dist/worker.boot.js' },
   // A worker has no DOM: packages that tell the two apart must give their worker variant.
   { ...forBrowser, format: 'iife', conditions: ['worker'], plugins: [noNodeModules], entryPoints: ['src/worker/web.ts'], outfile: 'dist/worker.web.js' },
   { ...forNode, entryPoints: ['src/cli/main.ts'], outfile: 'dist/cli.js', define: { LEADING_ORDER_VERSION: JSON.stringify(require('./package.json').version) }, banner: { js: '#!/usr/bin/env node' } },

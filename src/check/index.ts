@@ -1,6 +1,6 @@
 /** The door of check/: claims in a document or a single formula, judged. */
 import { build, children, sameExpression, walk, type Assumption, type Expression, type RelationNode } from '../expression/index.ts';
-import { attempt, type Budget, Declined, type Outcome } from '../outcome.ts';
+import { attempt, type Budget, Declined, type Outcome, success } from '../outcome.ts';
 import { missingFiles } from '../companions.ts';
 import type { CompanionFile, Finding } from '../protocol.ts';
 import { macrosOf, readExact, readExpression, readNotes, readVariable, settingsAt } from '../read/index.ts';
@@ -50,46 +50,67 @@ const SHARE = 0.25;
  */
 export function check(parts: CheckParts, budget: Budget): Outcome<Checked> {
   return attempt(() => {
-    const asked = readAsked(parts, budget);
-    const given = parts.of === undefined ? null : readGiven(parts.of, asked.variable);
-    const files = parts.files ?? [];
-    const options = { macros: macrosOf(files.map((f) => f.text)), ...(parts.memory ? { memory: parts.memory } : {}), ...(parts.fileName === undefined ? {} : { fileName: parts.fileName }) };
-    const { found, unread, content } = formulasOf(parts.text, parts.language, options);
-    const notes = readNotes(parts.text, parts.language, parts.fileName);
-    const absent = missingFiles(parts.text, parts.language, files);
-    const definitions = definitionsOf(found, files, options);
-    const findings: Finding[] = [];
-    const request = signatureOf([parts.language, absent, asked.variable, asked.point, asked.side, asked.assumptions, parts.of, parts.variable]);
-    const claims = found.map((formula) => ({ formula, claims: claimsIn(formula, given) }));
-    const starts = claims.flatMap((c) => c.claims.filter((claim) => claim.function !== null || hasMarks(claim.side)).map((claim) => claim.span.start)).sort((a, b) => a - b);
-    for (const { formula, claims: own } of claims) {
-      if (own.length === 0) continue;
-      const note = settingsAt(notes, formula.span.start);
-      if (note.skip === true) continue;
-      const around = aroundOf(parts.text, formula);
-      const { start, end } = formula.span;
-      const judgeAll = (time: Budget): readonly Finding[] =>
-        own.flatMap((claim) => {
-          const until = firstFrom(starts, claim.span.end);
-          const place: Place = { text: parts.text, formula, around, absent, ...(until === null ? {} : { until }) };
-          const local = withNote({ ...asked, budget: share(time) }, note, parts);
-          return withinTime(claim.span, () => checkClaim(claim, given, definitions, local, place));
-        });
-      const next = firstFrom(starts, end);
-      const key = (): string =>
-        signatureOf([request, note, parts.text.slice(start, end), formula.notation, formula.inline, formula.label, around.before, around.after, next === null || next > end + REACH ? null : next - start, definitionsUsed(own, definitions, parts.text, start), macrosUsed(parts.text.slice(start, end), content.macros)]);
-      findings.push(...remembered(parts.memory, key, start, budget, judgeAll));
+    const steps = checking(parts, budget);
+    for (;;) {
+      const step = steps.next();
+      if (step.done) return step.value;
     }
-    for (const branch of parts.code?.readBranches(parts.text, parts.language) ?? []) {
-      const note = settingsAt(notes, branch.span.start);
-      if (note.skip === true) continue;
-      const { start, end } = branch.span;
-      const judgeBranch = (time: Budget): readonly Finding[] => withinTime(branch.span, () => branchFindings(parts.text, branch, withNote({ ...asked, budget: share(time) }, note, parts)));
-      const key = (): string => signatureOf([request, note, branch, parts.text.slice(start, end + REACH)]);
-      findings.push(...remembered(parts.memory, key, start, budget, judgeBranch));
-    }
-    return { findings: findings.sort((a, b) => a.claim.start - b.claim.start || a.start - b.start), unread: unread.map(({ start, end, reason, unknown }) => ({ start, end, reason: unknown && absent.length > 0 ? `${reason.replace(/\.$/, '')}${orIn(absent)}.` : reason })) };
   });
+}
+
+/** The same in steps of one formula each; between them `pause` may let other work through, or throw to give up. */
+export async function checkInSteps(parts: CheckParts, budget: Budget, pause: () => Promise<void>): Promise<Outcome<Checked>> {
+  const steps = checking(parts, budget);
+  for (;;) {
+    const step = attempt(() => steps.next());
+    if (!step.ok) return step;
+    if (step.value.done) return success(step.value.value);
+    await pause();
+  }
+}
+
+function* checking(parts: CheckParts, budget: Budget): Generator<void, Checked> {
+  const asked = readAsked(parts, budget);
+  const given = parts.of === undefined ? null : readGiven(parts.of, asked.variable);
+  const files = parts.files ?? [];
+  const options = { macros: macrosOf(files.map((f) => f.text)), ...(parts.memory ? { memory: parts.memory } : {}), ...(parts.fileName === undefined ? {} : { fileName: parts.fileName }) };
+  const { found, unread, content } = formulasOf(parts.text, parts.language, options);
+  const notes = readNotes(parts.text, parts.language, parts.fileName);
+  const absent = missingFiles(parts.text, parts.language, files);
+  const definitions = definitionsOf(found, files, options);
+  const findings: Finding[] = [];
+  const request = signatureOf([parts.language, absent, asked.variable, asked.point, asked.side, asked.assumptions, parts.of, parts.variable]);
+  const claims = found.map((formula) => ({ formula, claims: claimsIn(formula, given) }));
+  const starts = claims.flatMap((c) => c.claims.filter((claim) => claim.function !== null || hasMarks(claim.side)).map((claim) => claim.span.start)).sort((a, b) => a - b);
+  for (const { formula, claims: own } of claims) {
+    if (own.length === 0) continue;
+    const note = settingsAt(notes, formula.span.start);
+    if (note.skip === true) continue;
+    const around = aroundOf(parts.text, formula);
+    const { start, end } = formula.span;
+    const judgeAll = (time: Budget): readonly Finding[] =>
+      own.flatMap((claim) => {
+        const until = firstFrom(starts, claim.span.end);
+        const place: Place = { text: parts.text, formula, around, absent, ...(until === null ? {} : { until }) };
+        const local = withNote({ ...asked, budget: share(time) }, note, parts);
+        return withinTime(claim.span, () => checkClaim(claim, given, definitions, local, place));
+      });
+    const next = firstFrom(starts, end);
+    const key = (): string =>
+      signatureOf([request, note, parts.text.slice(start, end), formula.notation, formula.inline, formula.label, around.before, around.after, next === null || next > end + REACH ? null : next - start, definitionsUsed(own, definitions, parts.text, start), macrosUsed(parts.text.slice(start, end), content.macros)]);
+    findings.push(...remembered(parts.memory, key, start, budget, judgeAll));
+    yield;
+  }
+  for (const branch of parts.code?.readBranches(parts.text, parts.language) ?? []) {
+    const note = settingsAt(notes, branch.span.start);
+    if (note.skip === true) continue;
+    const { start, end } = branch.span;
+    const judgeBranch = (time: Budget): readonly Finding[] => withinTime(branch.span, () => branchFindings(parts.text, branch, withNote({ ...asked, budget: share(time) }, note, parts)));
+    const key = (): string => signatureOf([request, note, branch, parts.text.slice(start, end + REACH)]);
+    findings.push(...remembered(parts.memory, key, start, budget, judgeBranch));
+    yield;
+  }
+  return { findings: findings.sort((a, b) => a.claim.start - b.claim.start || a.start - b.start), unread: unread.map(({ start, end, reason, unknown }) => ({ start, end, reason: unknown && absent.length > 0 ? `${reason.replace(/\.$/, '')}${orIn(absent)}.` : reason })) };
 }
 
 /** Findings kept from an earlier check, else judged now and kept, unless time ran short. */

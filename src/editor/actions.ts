@@ -81,9 +81,9 @@ async function results(services: Services, document: vscode.TextDocument, range:
   // Asked by the editor itself, the light bulb shows only for a selection whose answer is known already.
   if (automatic && range.isEmpty) return [];
   const place = selectionOf(document, range);
-  const known = services.consultant.known(document, place, ['reading', 'reach']);
+  const known = services.consultant.known(document, place, ['reading']);
   if (automatic && !known) return [];
-  const consultation = known ?? (await services.status.during(services.consultant.consult(document, place, ['reading', 'reach'], {}, token)));
+  const consultation = known ?? (await services.status.during(services.consultant.consult(document, place, ['reading'], {}, token)));
   if (token.isCancellationRequested || document.version !== consultation.version) return [];
   const { answer } = consultation;
   const target = consultation.place ?? place;

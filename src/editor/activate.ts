@@ -7,6 +7,7 @@ import { Consultant } from './consultant.ts';
 import { registerEquationLinks } from './equationLinks.ts';
 import { registerHints } from './hints.ts';
 import { registerHover } from './hover.ts';
+import { engineLanguage, isCode } from './languages.ts';
 import { Log } from './log.ts';
 import { Memory } from './memory.ts';
 import { registerNoteCompletion } from './noteCompletion.ts';
@@ -41,6 +42,7 @@ export function activateWith(context: vscode.ExtensionContext, start: ClientOpti
     },
     readFile: (name) => readBundled(context.extensionUri, name),
     log: (line) => log.info(line),
+    checksAside: true,
   });
   const memory = new Memory(context.workspaceState);
   const services: Services = { context, client, consultant: new Consultant(client, memory), memory, status, log };
@@ -64,11 +66,19 @@ export function activateWith(context: vscode.ExtensionContext, start: ClientOpti
   return { activation: performance.now() - began, endEngine: () => kill() };
 }
 
-/** The first hover should not have to wait for the worker's start: it starts in the first idle second after activation, with one small question. */
+/**
+ * The first hover should not have to wait for the worker's start: in the first idle second after activation the worker gets one small question of each kind that a
+ * hover asks, and one in the language of the code that is open, whose grammar is then there.
+ */
 function warmWhenIdle(client: EngineClient): vscode.Disposable {
   const warm = (): void => {
     listening.dispose();
-    if (!client.busy) void client.ask({ ask: 'expand', text: '\\sin x', language: 'latex', variable: 'x', details: ['reading', 'reach'] });
+    if (client.busy) return;
+    void client.consult({ desk: 'consult', text: '$\\frac{\\sin x}{x}$', language: 'latex', selection: { start: 8, end: 8 }, details: ['reading', 'reach'] });
+    void client.consult({ desk: 'picture', latex: '\\frac{\\sin x}{x} = 1 - \\frac{x^2}{6} + O\\left(x^4\\right)', ink: '#808080', width: 480, size: 15 });
+    const open = vscode.window.activeTextEditor?.document;
+    const language = open ? engineLanguage(open) : 'plain';
+    if (isCode(language)) void client.consult({ desk: 'consult', text: 'sin(x)', language, selection: { start: 0, end: 6 }, details: ['reading'] });
   };
   let timer = setTimeout(warm, IDLE_MS);
   const listening = vscode.workspace.onDidChangeTextDocument(() => {

@@ -86,7 +86,7 @@ const isPlaceLink = (link: unknown): link is PlaceLink =>
 const say = (message: string): void => void vscode.window.setStatusBarMessage(message, 6000);
 
 const consult = (room: Room, { document, place }: Target, chosen: Question = {}): Promise<Consultation> =>
-  room.services.status.during(room.services.consultant.consult(document, place, ['reading', 'reach'], chosen));
+  room.services.status.during(room.services.consultant.consult(document, place, ['reading'], chosen));
 
 /** The forms for code work on exactly one expression: the one found around a cursor. */
 async function onExpression(room: Room, link: unknown, mode: Mode): Promise<unknown> {

@@ -18,23 +18,40 @@ const FIRST_PICTURE_DEADLINE_MS = 500;
 const PICTURE_WIDTH = 480;
 const LONGEST_LINE = 600;
 
-const after = <T>(ms: number, value: T): Promise<T> => new Promise((resolve) => setTimeout(() => resolve(value), ms));
+/** What has come of the promise after so many milliseconds; null where nothing has. */
+const within = <T>(ms: number, work: Promise<T>): Promise<T | null> => Promise.race([work, new Promise<null>((resolve) => setTimeout(() => resolve(null), Math.max(0, ms)))]);
 
 let drawnBefore = false;
 
 export function registerHover(services: Services): vscode.Disposable {
+  /** Finished hovers, as long as their answers are remembered. */
+  const finished = new WeakMap<Consultation, Map<string, vscode.Hover>>();
   return vscode.languages.registerHoverProvider(SELECTOR, {
     provideHover: async (document, position, token) => {
+      const began = performance.now();
       const settings = settingsFor(document);
       if (settings.hover === 'off') return null;
       const selected = selectionAt(document, position);
       if (!selected && isCode(engineLanguage(document)) && !mayHoldCall(document.lineAt(position.line).text)) return null;
       const place = selected ?? selectionOf(document, new vscode.Range(position, position));
-      const consulting = services.consultant.consult(document, place, ['reading', 'reach'], {}, token);
-      const consultation = await Promise.race([consulting, after(DEADLINE_MS, null)]);
+      const left = (): number => DEADLINE_MS - (performance.now() - began);
+      const first = await within(left(), services.consultant.consult(document, place, ['reading'], {}, token));
       if (token.isCancellationRequested) return null;
-      if (!consultation) return selected || !isCode(engineLanguage(document)) ? new vscode.Hover(stillComputing(document, place)) : null;
-      return render(services, document, consultation, selected !== null, settings.hover === 'picture');
+      if (!first) return selected || !isCode(engineLanguage(document)) ? new vscode.Hover(stillComputing(document, place)) : null;
+      const style = JSON.stringify([selected !== null, settings.hover, vscode.window.activeColorTheme.kind]);
+      const known = finished.get(first)?.get(style);
+      if (known) return known;
+      const { answer } = first;
+      const saysMore = answer.ok && (selected !== null || first.worthwhile);
+      // The picture does not wait for the table, nor the expansion for either.
+      const picture = saysMore && settings.hover === 'picture' ? within(drawnBefore ? PICTURE_DEADLINE_MS : FIRST_PICTURE_DEADLINE_MS, drawn(services, answer)) : null;
+      const full = saysMore && !answer.exact && !first.asked.interval ? await within(left(), services.consultant.consult(document, place, ['reading', 'reach'], {}, token)) : first;
+      if (token.isCancellationRequested) return null;
+      const made = await picture;
+      drawnBefore ||= made !== null;
+      const hover = render(document, full ?? first, selected !== null, made);
+      if (hover && full && (made || !picture)) finished.set(first, (finished.get(first) ?? new Map<string, vscode.Hover>()).set(style, hover));
+      return hover;
     },
   });
 }
@@ -63,7 +80,7 @@ function trusted(): vscode.MarkdownString {
 }
 const linkTo = (document: vscode.TextDocument, place: Place): PlaceLink => ({ uri: document.uri.toString(), version: document.version, start: place.start, end: place.end });
 
-async function render(services: Services, document: vscode.TextDocument, consultation: Consultation, selected: boolean, picture: boolean): Promise<vscode.Hover | null> {
+function render(document: vscode.TextDocument, consultation: Consultation, selected: boolean, picture: vscode.MarkdownString | null): vscode.Hover | null {
   const { answer, place } = consultation;
   if (document.version !== consultation.version) return null;
   if (!answer.ok) {
@@ -85,14 +102,7 @@ async function render(services: Services, document: vscode.TextDocument, consult
   head.appendMarkdown(`\n\n${figures(answer, consultation)}`);
   const foot = trusted();
   foot.appendMarkdown(links(link, answer));
-  const contents: vscode.MarkdownString[] = [head];
-  if (picture) {
-    const made = await Promise.race([drawn(services, answer), after(drawnBefore ? PICTURE_DEADLINE_MS : FIRST_PICTURE_DEADLINE_MS, null)]);
-    drawnBefore ||= made !== null;
-    if (made) contents.push(made);
-  }
-  if (document.version !== consultation.version) return null;
-  contents.push(foot);
+  const contents = picture ? [head, picture, foot] : [head, foot];
   return new vscode.Hover(contents, place ? rangeOf(document, place.start, place.end) : undefined);
 }
 

@@ -1,5 +1,5 @@
 /** `check`: every printed expansion of a document, or one claim, judged. */
-import { check } from '../check/index.ts';
+import { check, checkInSteps, type CheckParts } from '../check/index.ts';
 import { type Budget, type Outcome, success } from '../outcome.ts';
 import type { CheckAnswer, CheckRequest } from '../protocol.ts';
 import { codeLanguage } from '../read/index.ts';
@@ -17,20 +17,19 @@ export async function askCheck(request: CheckRequest, tools: EngineTools, time: 
       // Without its grammar a language is still read by operator precedence.
     }
   }
-  const checked = check(
-    {
-      text,
-      language,
-      code: tools.code,
-      memory: tools.memory,
-      assumptions: assumptions.value,
-      ...(variable === undefined ? {} : { variable }),
-      ...(point === undefined ? {} : { point }),
-      ...(side === undefined ? {} : { side }),
-      ...(of === undefined ? {} : { of }),
-      ...(files === undefined ? {} : { files }),
-    },
-    time,
-  );
+  const parts: CheckParts = {
+    text,
+    language,
+    code: tools.code,
+    memory: tools.memory,
+    assumptions: assumptions.value,
+    ...(variable === undefined ? {} : { variable }),
+    ...(point === undefined ? {} : { point }),
+    ...(side === undefined ? {} : { side }),
+    ...(of === undefined ? {} : { of }),
+    ...(files === undefined ? {} : { files }),
+  };
+  await tools.pause?.();
+  const checked = tools.pause ? await checkInSteps(parts, time, tools.pause) : check(parts, time);
   return checked.ok ? success({ ok: true, ...checked.value }) : checked;
 }

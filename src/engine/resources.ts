@@ -7,12 +7,15 @@ export interface EngineResources {
   readonly loadFile: (name: string) => Promise<Uint8Array>;
   /** Whether the request that is being answered has been withdrawn. Asked often, so it must be cheap; without it a request ends by its time alone. */
   readonly interrupted?: () => boolean;
+  /** Called between the claims of a check: other requests may be answered before it resolves; it throws `Interrupted` to give the check up. */
+  readonly pause?: () => Promise<void>;
 }
 
 /** State that lives as long as one engine: loaded grammars, verdicts of earlier checks. */
 export interface EngineTools {
   readonly code: CodeReader;
   readonly memory: CheckMemory;
+  readonly pause?: () => Promise<void>;
 }
 
 const PARSER_RUNTIME = 'web-tree-sitter.wasm';
@@ -22,5 +25,5 @@ export function engineTools(resources: EngineResources): EngineTools {
     loadGrammar: (name) => resources.loadFile(`${name}.wasm`),
     wasmBinary: () => resources.loadFile(PARSER_RUNTIME),
   });
-  return { code, memory: new CheckMemory() };
+  return { code, memory: new CheckMemory(), ...(resources.pause ? { pause: resources.pause } : {}) };
 }

@@ -1,5 +1,7 @@
-/** The engine behind a message port. Answers requests one at a time, in the order they came; knows no file system, no DOM, no editor. */
+/** The engine behind a message port. Answers requests one at a time, in the order they came; a check lets what comes meanwhile through between its claims. Knows no file system, no DOM, no editor. */
 import { createEngine } from '../engine.ts';
+import { Interrupted } from '../outcome.ts';
+import type { ErrorAnswer } from '../protocol.ts';
 import { createDesk } from './desk/index.ts';
 import type { FromWorker, Port, ToWorker } from './messages.ts';
 
@@ -19,11 +21,28 @@ export function serve(port: Port<FromWorker, ToWorker>): void {
       port.post({ kind: 'wantFile', name });
     });
   let answering = 0;
-  const { withdrawn } = port;
-  const engine = createEngine({ loadFile, ...(withdrawn ? { interrupted: () => withdrawn() === answering } : {}) });
-  const desk = createDesk({ engine, loadFile });
+  let checking = 0;
+  let paused = 0;
+  const given = new Set<number>();
   let last: Promise<void> = Promise.resolve();
+  let lastCheck: Promise<void> = Promise.resolve();
+  /** Between the claims of a check. */
+  const pause = async (): Promise<void> => {
+    if (performance.now() - paused < SLICE_MS) return;
+    await port.turn();
+    await last;
+    if (given.has(checking)) throw new Interrupted();
+    answering = checking;
+    paused = performance.now();
+  };
+  const { withdrawn } = port;
+  const engine = createEngine({ loadFile, pause, ...(withdrawn ? { interrupted: () => withdrawn() === answering } : {}) });
+  const desk = createDesk({ engine, loadFile });
   port.listen((message) => {
+    if (message.kind === 'withdraw') {
+      given.add(message.ticket);
+      return;
+    }
     if (message.kind === 'file') {
       const { name, bytes } = message;
       for (const resolve of bytes ? (waiting.get(name) ?? []) : []) if (bytes) resolve(bytes);
@@ -33,9 +52,23 @@ export function serve(port: Port<FromWorker, ToWorker>): void {
       return;
     }
     const { ticket, request } = message;
-    last = last.then(async () => {
+    const answer = async (): Promise<void> => {
       answering = ticket;
-      port.post({ kind: 'answer', ticket, answer: 'desk' in request ? await desk.ask(request) : await engine.ask(request) });
+      const withdrawnEarly = given.delete(ticket);
+      port.post({ kind: 'answer', ticket, answer: withdrawnEarly ? CANCELLED : 'desk' in request ? await desk.ask(request) : await engine.ask(request) });
+      given.delete(ticket);
+    };
+    if (!('ask' in request) || request.ask !== 'check') {
+      last = last.then(answer);
+      return;
+    }
+    lastCheck = Promise.all([lastCheck, last]).then(() => {
+      checking = ticket;
+      return answer();
     });
   });
 }
+
+const CANCELLED: ErrorAnswer = { ok: false, error: { code: 'over-budget', message: new Interrupted().message } };
+/** A check works this long before it looks whether something else has come. */
+const SLICE_MS = 12;

@@ -8,6 +8,7 @@ const NONE = { ok: true, findings: [], unread: [] } as const;
 
 function room(interruptible = true) {
   const posted: ToWorker[] = [];
+  const asks = (): ToWorker[] => posted.filter(({ kind }) => kind === 'ask');
   const interrupted: number[] = [];
   let ended = 0;
   let events: WorkerEvents | null = null;
@@ -30,6 +31,7 @@ function room(interruptible = true) {
   });
   return {
     posted,
+    asks,
     interrupted,
     ended: () => ended,
     answer: (ticket: number) => events?.message({ kind: 'answer', ticket, answer: NONE }),
@@ -58,33 +60,36 @@ describe('a burst of changes', () => {
   });
 
   it('withdraws the check under way at the first change and keeps the worker', async () => {
-    const { posted, interrupted, ended, answer, type } = room();
+    const { asks, interrupted, ended, answer, type } = room();
     type('x');
     await vi.advanceTimersByTimeAsync(5000);
     for (let i = 0; i < 50; i += 1) type('y');
     expect(interrupted).toEqual([1]);
     answer(1);
     await vi.advanceTimersByTimeAsync(5000);
-    expect(posted).toHaveLength(2);
+    expect(asks()).toHaveLength(2);
     expect(ended()).toBe(0);
   });
 
   it('has at most one check in the worker, and ends one that does not give up', async () => {
-    const { posted, ended, type } = room();
+    const { asks, ended, type } = room();
     type('x');
     await vi.advanceTimersByTimeAsync(1000);
     type('y');
     await vi.advanceTimersByTimeAsync(1400);
-    expect([posted.length, ended()]).toEqual([1, 0]);
+    expect([asks().length, ended()]).toEqual([1, 0]);
     await vi.advanceTimersByTimeAsync(200);
-    expect([posted.length, ended()]).toEqual([2, 1]);
+    expect([asks().length, ended()]).toEqual([2, 1]);
   });
 
-  it('ends a worker that shares no memory', async () => {
-    const { ended, type } = room(false);
+  it('tells a worker that shares no memory, and ends it only if it does not give up', async () => {
+    const { posted, ended, type } = room(false);
     type('x');
     await vi.advanceTimersByTimeAsync(1000);
     type('y');
+    expect(posted.at(-1)).toEqual({ kind: 'withdraw', ticket: 1 });
+    expect(ended()).toBe(0);
+    await vi.advanceTimersByTimeAsync(1600);
     expect(ended()).toBe(1);
   });
 

@@ -1,5 +1,4 @@
 /** A LaTeX formula as one SVG picture in a data URI: glyphs as outlines, lines broken at relations and operators, nothing to load, nothing to install. */
-import katex from 'katex';
 import type { PictureAnswer, PictureRequest } from '../types.ts';
 import { type Box, type Laid, layOut, type Mark } from './layout.ts';
 import { type OutlineFont, readOutlines } from './outlines.ts';
@@ -42,7 +41,7 @@ interface Line {
 }
 
 async function make(request: PictureRequest, fonts: Map<string, OutlineFont>, loadFile: (name: string) => Promise<Uint8Array>): Promise<PictureAnswer> {
-  const bases = basesOf(request.latex);
+  const bases = basesOf(request.latex, await typesetter());
   for (const face of facesOf(bases)) if (!fonts.has(face)) fonts.set(face, readOutlines(await loadFile(`KaTeX_${face}.ttf`)));
   const measure = (face: string, codePoint: number): number | null => {
     const font = fonts.get(face);
@@ -80,10 +79,15 @@ async function make(request: PictureRequest, fonts: Map<string, OutlineFont>, lo
   return uri.length > LONGEST_URI ? NONE : { uri, width: w, height: h };
 }
 
+type TreeBuilder = (latex: string, options: object) => Box;
+/** Set up at the first picture. The tree builder is exported under a name that marks it internal; the shape used here is checked by the tests. */
+async function typesetter(): Promise<TreeBuilder> {
+  const { default: katex } = await import('katex');
+  return (katex as unknown as { readonly __renderToHTMLTree: TreeBuilder }).__renderToHTMLTree;
+}
+
 /** The unbreakable pieces of a formula, in order. Throws where the typesetter cannot read it. */
-function basesOf(latex: string): readonly Box[] {
-  // The tree builder is exported under a name that marks it internal; the shape used here is checked by the tests.
-  const build = (katex as unknown as { readonly __renderToHTMLTree: (latex: string, options: object) => Box }).__renderToHTMLTree;
+function basesOf(latex: string, build: TreeBuilder): readonly Box[] {
   const tree = build(latex, { displayMode: true, throwOnError: true, strict: 'ignore', trust: false, maxExpand: 500 });
   const found: Box[] = [];
   const walk = (box: Box): void => {

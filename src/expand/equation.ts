@@ -56,7 +56,7 @@ function falling(n: number, j: number): bigint {
 }
 
 /** The coefficients of p(center + u), by repeated synthetic division. */
-function recentre(c: Context, p: readonly Element[], center: Element): Element[] {
+export function recentre(c: Context, p: readonly Element[], center: Element): Element[] {
   const result = [...p];
   if (isRational(center) && center.num === 0n) return result;
   for (let k = 0; k < result.length; k += 1) {

@@ -54,7 +54,10 @@ export function blame(accused: Accused): Blame {
   const { truncated, failure } = accused;
   const whole = truncated.side.span ?? { start: 0, end: accused.text.length };
   const { difference } = failure;
-  if (!difference) return { place: whole, message: 'The two sides differ by more than the claim allows.', found: '', fix: null };
+  if (!difference) {
+    const first = truncated.terms.length > 1 ? truncated.terms[failure.matched]?.node.span : undefined;
+    return { place: first ?? whole, message: first && failure.matched > 0 ? 'From this term on the two sides differ by more than the claim allows.' : 'The two sides differ by more than the claim allows.', found: '', fix: null };
+  }
   if (failure.onlyOrder) return orderBlame(accused, difference.size) ?? { place: whole, message: 'The stated order is too strong.', found: '', fix: null };
   const expansion = truthAround(accused, difference.size);
   const repair = firstRepair(accused, difference, expansion);

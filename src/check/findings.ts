@@ -14,7 +14,7 @@ import { calibrated } from './calibrate.ts';
 import { isGridName, normalise } from './normalise.ts';
 import { notationOf, writeIn } from './notation.ts';
 import type { Setting } from './context.ts';
-import { leading } from './size.ts';
+import { compare, compareSizes, leading } from './size.ts';
 import { settingsFor, type Around, type Asked, type Choice } from './setting.ts';
 import { hasMarks, withoutMarks } from './truncated.ts';
 
@@ -93,20 +93,21 @@ function mainFinding(printed: Claim, given: Expression, asked: Asked, place: Pla
     }
     const judgement = judge(f, claim.side, claim.relation, choice.setting);
     if (judgement.kind === 'identity') return null;
-    if (judgement.kind === 'holds') return settled(holding(claim, f, choice.setting, judgement, place, options.lenient), choice.setting, claim.side);
-    tried.push({ choice, judgement });
+    if (judgement.kind === 'holds' && !isByChance(judgement, tried, choice)) return settled(holding(claim, f, choice.setting, judgement, place, options.lenient), choice.setting, claim.side);
+    if (judgement.kind !== 'holds') tried.push({ choice, judgement });
   }
   // A guess that fails counts only if no likelier guess is open, and if the terms show that it is the right one.
   const open = tried.findIndex((t) => t.judgement.kind === 'undecided');
   const firm = tried.findIndex((t) => t.judgement.kind === 'fails' && (t.choice.certain || t.judgement.failure.matched > 0 || (open >= 0 && isNearlyTrue(given, printed, t, place))));
   if (open >= 0 && (firm < 0 || (open < firm && tried[firm]?.choice.certain !== true))) tried.splice(0, tried.length, ...tried.slice(open, open + 1));
   else if (firm >= 0) tried.splice(0, tried.length, ...tried.slice(firm, firm + 1));
-  const best = tried.reduce<Tried | null>((a, b) => (a === null || matchedIn(b) > matchedIn(a) ? b : a), null);
+  const offByConstant = firm < 0 && open < 0 && !hasMarks(printed.side) ? tried.find((t) => isOffByConstant(t.choice.setting, given, printed.side)) : undefined;
+  const best = offByConstant ?? tried.reduce<Tried | null>((a, b) => (a === null || matchedIn(b) > matchedIn(a) ? b : a), null);
   if (!best) return null;
   const { f, claim } = reduced(given, printed, best.choice.setting);
   if (best.judgement.kind === 'undecided') return meant(claim, f, best.choice.setting) ? only(undecided(claim, place, best.judgement.reason)) : null;
   if (best.judgement.kind !== 'fails') return null;
-  if (!isHeldAgainst(claim, f, best, tried.length > 1, place)) return meant(claim, f, best.choice.setting) && hasMarks(claim.side) ? only(undecided(claim, place, 'It is not plain in which quantity, and where, this is an expansion; say so with a note such as leading-order: small x.')) : null;
+  if (!isHeldAgainst(claim, f, best, tried.length > 1, place, offByConstant)) return meant(claim, f, best.choice.setting) && hasMarks(claim.side) ? only(undecided(claim, place, 'It is not plain in which quantity, and where, this is an expansion; say so with a note such as leading-order: small x.')) : null;
   if (!best.choice.certain && (mentionsFunction(f) || mentionsFunction(claim.side))) return only(undecided(claim, place, 'In which quantity this is an expansion is not plain; say so with a note such as leading-order: small h.'));
   if (options.resolved === true && best.judgement.failure.matched === 0 && !isNearlyTrue(given, printed, best, place)) return only(undecided(claim, place, 'The definition of the left side that stands in this document does not belong to this claim, or the claim is wrong from its first term.'));
   const unknown = unknownSymbols(f, claim.side, best.choice.setting);
@@ -266,10 +267,21 @@ function named(e: Expression, name: string, value: Expression): Expression {
 /** An equation without any mark of an expansion. */
 const isPlainEquation = (c: Claim): boolean => c.relation === '=' && !hasMarks(c.side);
 
-const isGridLike = (e: Expression): boolean => e.kind === 'symbol' && isGridName(e);
+const isGridLike = (e: Expression): boolean => [...walk(e)].some((n) => n.kind === 'symbol' && isGridName(n));
 /** The printed side holds f(x + h) with the variable inside. */
 const movesFunction = (side: Expression, variable: string): boolean => [...walk(side)].some((n) => n.kind === 'apply' && n.args.some((a) => dependsOn(a, variable)));
 const mentionsFunction = (e: Expression): boolean => [...walk(e)].some((n) => n.kind === 'apply' || (n.kind === 'symbol' && isGridName(n)));
+
+/** Elsewhere than where its first terms are right, the claim says nothing: every printed term vanishes in the remainder, or all are of one size. */
+function isByChance({ hint, truncated }: Extract<Judgement, { kind: 'holds' }>, tried: readonly Tried[], { certain, setting }: Choice): boolean {
+  if (certain) return false;
+  if (hint?.kind === 'absorbed') return tried.some((t) => t.judgement.kind === 'fails' && t.judgement.failure.matched > 0);
+  if (truncated.mark === 'O' || truncated.mark === 'o' || truncated.terms.length < 2) return false;
+  const sizes = truncated.terms.map((t) => leading(setting, t.value));
+  const [first] = sizes;
+  const moves = truncated.terms.filter((t) => dependsOn(t.value, setting.variable)).length > 0;
+  return moves && first?.kind === 'monomial' && sizes.every((s) => s.kind === 'monomial' && compareSizes(s.size, first.size) === 0) && truncated.terms.some((t) => [...walk(t.value)].some((n) => n.kind === 'power' && dependsOn(n.exponent, setting.variable)));
+}
 
 function isNearlyTrue(given: Expression, printed: Claim, tried: Tried, place: Place): boolean {
   if (tried.judgement.kind !== 'fails') return false;
@@ -280,20 +292,26 @@ function isNearlyTrue(given: Expression, printed: Claim, tried: Tried, place: Pl
 const matchedIn = (t: Tried): number => (t.judgement.kind === 'fails' ? t.judgement.failure.matched : -1);
 
 /** The claim is plainly meant as a truncated expansion: by its mark, or by terms that agree. */
-function isHeldAgainst(claim: Claim, f: Expression, best: Tried, several: boolean, place: Place): boolean {
+function isHeldAgainst(claim: Claim, f: Expression, best: Tried, several: boolean, place: Place, offByConstant?: Tried): boolean {
   if (best.judgement.kind !== 'fails') return false;
   const { failure, truncated } = best.judgement;
   const count = truncated.terms.length;
   const certain = best.choice.certain;
   if (claim.relation === 'to' || claim.relation === 'define') return false;
   // In running text a tilde before one term may only say how a quantity scales.
-  if (claim.relation === 'tilde' && (count === 1 || (place.formula.inline && failure.matched === 0)) && truncated.mark === 'none') return !place.formula.inline && certain && failure.matched === 0 && count === 1;
   const oneChange = (): boolean => isOneChangeAway(accusedOf(claim, f, best.choice.setting, { failure, truncated }, place));
+  if (claim.relation === 'tilde' && count === 1 && truncated.mark === 'none') return !place.formula.inline && certain && failure.matched === 0;
+  if (claim.relation === 'tilde' && place.formula.inline && failure.matched === 0 && truncated.mark === 'none' && !oneChange()) return false;
   const marked = truncated.mark !== 'none';
   if (marked) return certain || failure.matched > 0 || !several || (count > 1 && isTranscendental(f, best.choice.setting.variable));
   if (!isTranscendental(f, best.choice.setting.variable)) return false;
   if (claim.relation === '=') return (count >= 2 && failure.matched >= 1) || (count >= 3 && oneChange());
-  return failure.matched >= 1 || (certain && failure.difference !== null) || (count >= 2 && oneChange());
+  return failure.matched >= 1 || (certain && failure.difference !== null) || (count >= 2 && oneChange()) || best === offByConstant;
+}
+
+/** The two sides are of one size on a scale of their own (exponentials, n^n), so that only a constant is wrong. */
+function isOffByConstant(setting: Setting, f: Expression, side: Expression): boolean {
+  return leading(setting, f).kind === 'other' && leading(setting, side).kind === 'other' && compare(setting, f, side) === 'same';
 }
 
 function meant(claim: Claim, f: Expression, setting: Setting): boolean {

@@ -60,7 +60,7 @@ function againstScale(truncated: Truncated, scale: Expression, difference: Expre
   if (typeof size === 'object') return { kind: 'undecided', reason: size.undecided, needsTime: size.needsTime };
   const holds = truncated.mark === 'O' ? size !== 'larger' : size === 'smaller';
   const lead = leading(setting, difference);
-  if (!holds) return { kind: 'fails', failure: failureOf(truncated, lead, setting), truncated };
+  if (!holds) return { kind: 'fails', failure: failureOf(truncated, difference, lead, setting), truncated };
   const absorbed = truncated.terms.find((t) => {
     const reach = compare(setting, t.value, scale);
     return truncated.mark === 'O' ? reach === 'same' || reach === 'smaller' : reach === 'smaller';
@@ -74,13 +74,13 @@ function againstScale(truncated: Truncated, scale: Expression, difference: Expre
 function againstLast(truncated: Truncated, truth: Expression, difference: Expression, lead: Leading, setting: Setting): Judgement {
   const reach = isDifferenceFormula(truncated.side, setting) ? ownSize(truth, setting) : lastKept(truncated, setting);
   if (lead.kind === 'monomial' && reach) {
-    return compareSizes(lead.size, reach.last) > 0 ? { kind: 'holds', hint: null, truncated } : { kind: 'fails', failure: failureOf(truncated, lead, setting), truncated };
+    return compareSizes(lead.size, reach.last) > 0 ? { kind: 'holds', hint: null, truncated } : { kind: 'fails', failure: failureOf(truncated, difference, lead, setting), truncated };
   }
   const last = truncated.terms.at(-1);
   if (!last) return { kind: 'undecided', reason: 'No printed term was found.', needsTime: false };
   const size = compare(setting, difference, last.value);
   if (typeof size === 'object') return { kind: 'undecided', reason: size.undecided, needsTime: size.needsTime };
-  return size === 'smaller' ? { kind: 'holds', hint: null, truncated } : { kind: 'fails', failure: failureOf(truncated, lead, setting), truncated };
+  return size === 'smaller' ? { kind: 'holds', hint: null, truncated } : { kind: 'fails', failure: failureOf(truncated, difference, lead, setting), truncated };
 }
 
 /** Values f(x + h) of an unspecified function: the formula is as good as what remains beside the quantity itself. */
@@ -91,10 +91,14 @@ function ownSize(truth: Expression, setting: Setting): { readonly last: Size } |
   return own.kind === 'monomial' ? { last: own.size } : null;
 }
 
-function failureOf(truncated: Truncated, lead: Leading, setting: Setting): Failed {
+function failureOf(truncated: Truncated, difference: Expression, lead: Leading, setting: Setting): Failed {
   const found = lead.kind === 'monomial' ? { size: lead.size, coefficient: lead.coefficient } : null;
-  const sizes = truncated.terms.map((t) => leading(setting, t.value));
-  const right = sizes.map((s) => found !== null && s.kind === 'monomial' && compareSizes(s.size, found.size) < 0);
+  const isRight = (term: PrintedTerm): boolean => {
+    const own = leading(setting, term.value);
+    if (found && own.kind === 'monomial') return compareSizes(own.size, found.size) < 0;
+    return found === null && compare(setting, term.value, difference) === 'larger';
+  };
+  const right = truncated.terms.map(isRight);
   return { difference: found, onlyOrder: truncated.scale !== null && right.length > 0 && right.every(Boolean), matched: right.filter(Boolean).length };
 }
 

@@ -25,6 +25,8 @@ export function quantitiesNamed(name: string, symbols: readonly string[]): reado
     const modulus = call('sin', quotient(symbol(amplitude), number(2)));
     out.push({ title: 'the period of a pendulum of this amplitude', value: product(number(4), squareRoot(quotient(symbol(length), symbol(gravity))), call('ellipticK', modulus)), variable: amplitude });
   }
+  const bessel = /^([JYIKj])_?\{?([0-9])\}?\((\w+)\)$/.exec(name);
+  if (bessel?.[1] !== undefined && bessel[3] !== undefined && symbols.includes(bessel[3])) out.push({ title: 'the Bessel function', value: call(`bessel${bessel[1].toUpperCase()}`, number(Number(bessel[2])), symbol(bessel[3])), variable: bessel[3] });
   const speed = pick('v', 'u');
   const light = pick('c');
   if (speed !== null && light !== null) {

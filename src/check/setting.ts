@@ -1,5 +1,5 @@
 /** In which quantity, and at which point, a claim is an expansion: from the request, from marks and words around, else from its own powers. */
-import { build, dependsOn, freeSymbols, Q, sameExpression, walk, type Assumption, type Expression } from '../expression/index.ts';
+import { build, children, dependsOn, freeSymbols, Q, sameExpression, walk, type Assumption, type Expression } from '../expression/index.ts';
 import type { Budget } from '../outcome.ts';
 import { candidates } from '../read/index.ts';
 import type { Setting } from './context.ts';
@@ -53,7 +53,7 @@ export function settingsFor(f: Expression, side: Expression, asked: Asked, aroun
     // 1/x in an O-term does not say at which end of the line.
     return [make(foundName, point, true), ...(point === 'inf' && !asked.point ? [make(foundName, '-inf', false)] : [])];
   }
-  const names = foundName !== null ? [foundName] : likelyVariables(f, side);
+  const names = foundName !== null ? [foundName] : likelyVariables(f, side, inOrders);
   return names.flatMap((name) => {
     if (asked.point) return [make(name, asked.point, true)];
     // What running text says nearby may belong to another formula: it is tried first.
@@ -89,24 +89,32 @@ function positive(sides: readonly Expression[], variable: string, known: readonl
   return [...names].filter((n) => !spoken.has(n)).map((n) => ({ kind: 'relation', left: build.symbol(n), relation: '>', right: ZERO }));
 }
 
-/** Symbols in whose powers the printed side runs, most distinct powers first, and which the function holds too. */
-function likelyVariables(f: Expression, side: Expression): readonly string[] {
+/** Symbols in whose powers the printed side runs, those in O-terms and then those with most distinct powers first, and which the function holds too. */
+function likelyVariables(f: Expression, side: Expression, inOrders: readonly string[]): readonly string[] {
   const kept = withoutMarks(side);
   const names = freeSymbols(kept).filter((name) => dependsOn(f, name));
-  const scored = names.map((name) => ({ name, powers: powersOf(kept, name), order: freeSymbols(f).indexOf(name) }));
+  const bounded = names.filter((name) => inOrders.includes(name));
+  const scored = (bounded.length > 0 ? bounded : names).map((name) => ({ name, plain: powersOf(kept, name, false).size, powers: powersOf(kept, name, true).size, order: freeSymbols(f).indexOf(name) }));
   return scored
-    .filter((s) => s.powers.size > 0)
-    .sort((a, b) => b.powers.size - a.powers.size || a.order - b.order)
+    .filter((s) => s.powers > 0)
+    .sort((a, b) => b.plain - a.plain || b.powers - a.powers || a.order - b.order)
     .map((s) => s.name)
     .slice(0, 3);
 }
 
-function powersOf(e: Expression, name: string): ReadonlySet<string> {
+/** Distinct powers of the symbol among factors and bases; `inCalls`: inside of functions too. */
+function powersOf(e: Expression, name: string, inCalls: boolean): ReadonlySet<string> {
   const found = new Set<string>();
-  for (const node of walk(e)) {
-    if (node.kind === 'symbol' && node.name === name) found.add('1');
-    if (node.kind === 'power' && node.base.kind === 'symbol' && node.base.name === name) found.add(JSON.stringify(numberOf(node.exponent), (_, v: unknown) => (typeof v === 'bigint' ? `${v}` : v)) ?? '');
-  }
+  const visit = (node: Expression, exponent: string): void => {
+    if (node.kind === 'symbol') {
+      if (node.name === name) found.add(exponent);
+    } else if (node.kind === 'power') {
+      const own = numberOf(node.exponent);
+      visit(node.base, own ? `${exponent}*${Q.toText(own)}` : '');
+      visit(node.exponent, '1');
+    } else if (node.kind !== 'call' || inCalls) for (const child of children(node)) visit(child, exponent);
+  };
+  visit(e, '1');
   return found;
 }
 

@@ -93,6 +93,7 @@ function ownForm(known: KnownName, index: Expression | null, args: readonly Expr
     if (plain === 'im' || plain === 'Im') return { kind: 'call', function: 'im', args, written: known.written };
     if (plain === 'conj') return { kind: 'call', function: 'conj', args, written: known.written };
   }
+  if (plain === 'pow' && second && args.length === 2 && index === null) return build.power(first, second);
   const base = index ?? (args.length === 2 ? second : undefined);
   if (base && /^(?:\\(?:log|ln)|\\operatorname\{(?:log|ln)\})$/.test(latex)) {
     const whole = base.kind === 'number' && base.value.den === 1n ? base.value.num : 0n;

@@ -11,7 +11,7 @@ export interface KnownName {
 }
 
 /** Functions that the tree has without a description, as they are written with words or marks of their own. */
-const OWN: ReadonlySet<string> = new Set(['sqrt', 'cbrt', 're', 'im', 'Re', 'Im', 'conj']);
+const OWN: ReadonlySet<string> = new Set(['sqrt', 'cbrt', 'pow', 're', 'im', 'Re', 'Im', 'conj']);
 
 export const commandName = (name: string): KnownName | null => (lookupLatex(`\\${name}`) ? { written: `\\${name}`, latex: `\\${name}`, plain: null } : null);
 

@@ -272,6 +272,8 @@ function plainWord(p: State, from: number, t: Token): Expression | string {
   if (constant && !p.options.symbols.has(word) && !(t.upright && word !== 'pi')) return node(p, from, { ...constant });
   if (word === 'Pi' && !isMark(peek(p), '(')) return node(p, from, build.constant('pi'));
   if (p.options.symbols.has(word)) return word;
+  const logarithm = /^(?:ln|LN)_?(2|10)$/.exec(word)?.[1];
+  if (logarithm !== undefined && !isMark(peek(p), '(')) return node(p, from, build.call('log', build.number(Number(logarithm))));
   const known = wordName(word);
   if (known && canTakeArgument(p, word, t)) return applyKnown(p, from, known);
   if (t.upright && /^(?:[Tt]r|trace|det)$/.test(word)) return ofMatrix(p, from, word === 'det' ? 'determinant' : 'trace');

@@ -9,7 +9,7 @@ import { readExact } from '../read/index.ts';
 import { remainderText, toPlain } from '../write/index.ts';
 import { readAllAssumptions } from './assumptions.ts';
 import type { MeasuredConstants } from './constants.ts';
-import type { Expander } from './expand.ts';
+import type { Expander } from './expander.ts';
 import { plotAnswer } from './plot.ts';
 
 /** Tolerance of the reverse question where none is given: common practice for plotting accuracy and single-digit percentages of parts per thousand. */
@@ -99,6 +99,7 @@ function neededAnswer(needed: TermsNeeded): NeededAnswer {
     ...(needed.estimate === undefined ? {} : { estimate: needed.estimate }),
     ...(needed.best ? { best: needed.best } : {}),
     ...(needed.reach ? { reach: needed.reach } : {}),
+    ...(needed.fittedDegree === undefined ? {} : { fittedDegree: needed.fittedDegree }),
   };
 }
 

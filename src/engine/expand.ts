@@ -1,6 +1,6 @@
 /** `expand`: text -> expansion, bound, terms needed, and the details asked for. */
 import { type Expression, type Rational, structureKey } from '../expression/index.ts';
-import { expand, expandRoot, expandSmall, type Expansion, type ExpansionProblem } from '../expand/index.ts';
+import { expand, expandRoot, expandSmall, isScalarFormula, type Expansion, type ExpansionProblem } from '../expand/index.ts';
 import { type Budget, failure, type Outcome, success } from '../outcome.ts';
 import type { ExpandAnswer, ExpandRequest, Failure } from '../protocol.ts';
 import { rationalOf, readExact, readSmall } from '../read/index.ts';
@@ -8,8 +8,9 @@ import { readAllAssumptions } from './assumptions.ts';
 import { withBounds } from './bounds.ts';
 import { expansionAnswer } from './expansionAnswer.ts';
 import { targetOf } from './conditions.ts';
-import { differentialQuestion, solverOf } from './differential.ts';
+import { equationAnswer } from './differential.ts';
 import { filledConstants, measuredConstants, sourceOf } from './constants.ts';
+import type { Expander } from './expander.ts';
 import { equationOf, functionOf, pointOf, questionOf, readPoint, variableOf } from './question.ts';
 import { insertionAnswer } from './insertion.ts';
 import { integralAnswer } from './integralValue.ts';
@@ -27,12 +28,6 @@ function extent(request: ExpandRequest): Outcome<{ readonly terms: number } | { 
   return value ? success({ order: value }) : failure('bad-request', `The order "${request.order}" must be a rational number such as 6 or 7/2.`);
 }
 
-/** Finds the expansion with the number of terms asked for; also how to ask for another number. */
-export interface Expander {
-  readonly first: Expansion;
-  readonly withTerms: (terms: number) => Outcome<Expansion>;
-}
-
 function expanderOf(request: ExpandRequest, source: SourceFormula, time: Budget): Outcome<Expander> {
   const size = extent(request);
   if (!size.ok) return size;
@@ -42,8 +37,6 @@ function expanderOf(request: ExpandRequest, source: SourceFormula, time: Budget)
     return success({ first: first.value, withTerms: (terms) => solve({ terms }) });
   };
   if (request.small) return smallOf(request, request.small, source, run, time);
-  const differential = differentialQuestion(request, source);
-  if (differential) return differential.ok ? run(solverOf(differential.value, time)) : differential;
   if (request.unknown !== undefined || (source.unknown !== undefined && source.expression.kind === 'relation')) return rootOf(request, source, run, time);
   const question = questionOf(request, source);
   if (!question.ok) return question;
@@ -101,6 +94,10 @@ export async function askExpand(request: ExpandRequest, tools: EngineTools, time
   if (!source.ok) return source;
   const value = integralAnswer(functionOf(source.value.expression), request, time);
   if (value) return value;
+  const size = extent(request);
+  if (!size.ok) return size;
+  const equation = request.small ? null : equationAnswer(request, source.value, size.value, time);
+  if (equation) return equation.ok ? equation : placed(equation.error, request, source.value);
   const expander = expanderOf(request, source.value, time);
   if (!expander.ok) return placed(expander.error, request, source.value);
   const found = expansionAnswer(expander.value.first);
@@ -108,6 +105,11 @@ export async function askExpand(request: ExpandRequest, tools: EngineTools, time
   const reading = request.details?.includes('reading') ? { reading: readingAnswer(request, source.value, expander.value.first) } : {};
   const place = { document: request.text, language: request.language, expression: request.text.slice(source.value.start, source.value.end) };
   const insertion = request.details?.includes('insertion') ? { insertion: insertionAnswer(expander.value.first, place) } : {};
+  const assumptions = readAllAssumptions(request.assume);
+  if (!isScalarFormula(expander.value.first.function, assumptions.ok ? assumptions.value : [])) {
+    const measured = request.interval !== undefined || request.tolerance !== undefined || request.at !== undefined;
+    return measured ? failure('bad-request', 'Bounds and values are given for formulas in numbers; leave out the interval, or write vectors and operators by components.') : success({ ...answer, ...reading, ...insertion });
+  }
   return withBounds({ ...answer, ...reading, ...insertion }, expander.value, request, measuredConstants(source.value), time);
 }
 

@@ -2,8 +2,7 @@
 import { type ApplyNode, Q } from '../expression/index.ts';
 import { Declined } from '../outcome.ts';
 import { exactOf, growth, integralTail, levels, type Multi, type ScaleElement, Series, Stream, streamIn, sumOf, withExact } from '../series/index.ts';
-import type { Evaluate } from './calls.ts';
-import type { Session } from './session.ts';
+import type { Evaluate, Session } from './session.ts';
 
 export function evaluateApply(s: Session, e: ApplyNode, evaluate: Evaluate): Multi {
   const c = s.context;

@@ -1,6 +1,6 @@
 /** Calls of known functions: elementary ones by their own series, others by what their description says. */
 import type { Element } from '../algebra/types.ts';
-import { build, type CallNode, type Expression, Q } from '../expression/index.ts';
+import { build, type CallNode, Q } from '../expression/index.ts';
 import { acceptsArity, describe, type FunctionDescription } from '../functions/index.ts';
 import { Declined } from '../outcome.ts';
 import {
@@ -8,9 +8,7 @@ import {
   scaleBy, Series, sineCosine, split, subtract, withExact,
 } from '../series/index.ts';
 import { evaluateDescribed, refusePole } from './described.ts';
-import type { Session } from './session.ts';
-
-export type Evaluate = (s: Session, e: Expression) => Multi;
+import type { Evaluate, Session } from './session.ts';
 
 export function evaluateCall(s: Session, e: CallNode, evaluate: Evaluate): Multi {
   const c = s.context;

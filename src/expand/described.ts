@@ -4,8 +4,7 @@ import { build, type CallNode, type Expression, Q, type Rational, walk } from '.
 import { acceptsArity, describe, type FormalSeries, type FunctionDescription, type LocalForm, type Place } from '../functions/index.ts';
 import { Declined } from '../outcome.ts';
 import { add, alongDerivative, beyondAllOrders, compose, type Context, eventualSign, exactOf, finiteStream, growth, isRational, isRealMulti, leading, monomial, type Multi, multiply, plainText, scaleBy, Series, signOfExponent, split, withExact } from '../series/index.ts';
-import type { Evaluate } from './calls.ts';
-import { bind, freshSymbol, type Session } from './session.ts';
+import { bind, type Evaluate, freshSymbol, type Session } from './session.ts';
 import { aroundSlowPart } from './slow-part.ts';
 import { taylorFromEquation } from './equation.ts';
 

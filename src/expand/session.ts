@@ -17,6 +17,9 @@ export interface Session {
   readonly fresh: { value: number };
 }
 
+/** Tree -> series, as the whole evaluation does it: handed down to where sub-trees are met. */
+export type Evaluate = (s: Session, e: Expression) => Multi;
+
 export const openSession = (context: Context, bindings: ReadonlyMap<string, Multi>): Session => ({
   context,
   bindings,

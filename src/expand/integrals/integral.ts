@@ -2,8 +2,7 @@
 import { children, type Expression, type IntegralNode, Q } from '../../expression/index.ts';
 import { Declined } from '../../outcome.ts';
 import { eventualSign, exactOf, growth, integrate, isKnownZero, isZero, type Multi, multiply, Series, split, subtract, theta, withExact } from '../../series/index.ts';
-import type { Evaluate } from '../calls.ts';
-import { bind, type Session } from '../session.ts';
+import { type Evaluate, bind, type Session } from '../session.ts';
 import { byMoments } from './moments.ts';
 import { laplaceForm, watson } from './watson.ts';
 

@@ -7,8 +7,7 @@ import type { Element } from '../../algebra/types.ts';
 import { build, children, dependsOn, type Expression, Q } from '../../expression/index.ts';
 import { Declined } from '../../outcome.ts';
 import { addElements, type Context, eventualSign, growth, isRational, isZero, mapStream, monomial, type Multi, multiplyElements, Series, unnamed } from '../../series/index.ts';
-import type { Evaluate } from '../calls.ts';
-import { bind, type Session } from '../session.ts';
+import { type Evaluate, bind, type Session } from '../session.ts';
 import { type Range, signOn } from './monotone.ts';
 
 /** v^power exp(-rate v^degree): what is integrated on an infinite interval. */

@@ -11,9 +11,8 @@ import {
   add, addElements, beyondAllOrders, compareExponents, type Context, exponential, growth, isRational, isZero, leading, monomialOf, type Multi, multiply, multiplyElements, negate, power, powerTailOf, relativeTail, scaleBy,
   Series, signOfExponent, type Stream, streamIn, subtract, sumOfSeries,
 } from '../../series/index.ts';
-import type { Evaluate } from '../calls.ts';
 import { type Direction, openSide } from '../open-side.ts';
-import type { Session } from '../session.ts';
+import type { Evaluate, Session } from '../session.ts';
 import { directionOn, type Range, regularOn } from './monotone.ts';
 
 /** exp(-lambda(t) phi(v)) g(v) c(t). */

@@ -1,23 +1,15 @@
 /** Where the roots start: their leading terms, each simple enough for Newton's iteration to go on. */
 import type { Element } from '../../algebra/types.ts';
-import { build, type Expression, Q } from '../../expression/index.ts';
+import { build, Q } from '../../expression/index.ts';
 import { Declined } from '../../outcome.ts';
 import { add, compareMonomials, growth, isZero, type Monomial, monomialOf, monomialSeries, type Multi, multiplyMonomials, scaleBy, Series, unitMonomial } from '../../series/index.ts';
 import { evaluate } from '../evaluate.ts';
 import { solveFor } from './explicit.ts';
 import { infiniteStarts } from './infinite.ts';
 import { polygonEdges } from './polygon.ts';
+import type { Start } from './start.ts';
 import { type Curve, separate, taylorAt } from './taylor.ts';
 import { zerosOf } from './zeros.ts';
-
-export interface Start {
-  readonly value: Multi;
-  readonly multiplicity: number;
-  /** The value solves the equation as it stands. */
-  readonly exact: boolean;
-  /** An equivalent equation in which Newton's iteration improves the start. */
-  readonly tree?: Expression;
-}
 
 const MOST_DEGREE = 24;
 const DEEPEST = 8;

@@ -7,7 +7,8 @@ import { requireShallow } from '../depth.ts';
 import type { Expansion, ExpansionProblem, RootProblem } from '../expansion.ts';
 import { type Direction, openSide } from '../open-side.ts';
 import { type SideResult, takeTerms } from '../side.ts';
-import { type Start, startsOf } from './branches.ts';
+import { startsOf } from './branches.ts';
+import type { Start } from './start.ts';
 import { refine } from './newton.ts';
 import { openCurve } from './taylor.ts';
 

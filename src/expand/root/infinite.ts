@@ -7,7 +7,7 @@ import {
 } from '../../series/index.ts';
 import { evaluate } from '../evaluate.ts';
 import { type Direction, openSide } from '../open-side.ts';
-import type { Start } from './branches.ts';
+import type { Start } from './start.ts';
 import { type Curve, separate } from './taylor.ts';
 
 /** One start for each end of the real line, and each side of 0, where A grows like B. */

@@ -2,8 +2,7 @@
 import { build, type Expression, Q } from '../../expression/index.ts';
 import { Declined } from '../../outcome.ts';
 import { divide, growth, type Multi, monomialOf, scaleBy, sumOf, sumOfSeries, theta } from '../../series/index.ts';
-import type { Evaluate } from '../calls.ts';
-import type { Session } from '../session.ts';
+import type { Evaluate, Session } from '../session.ts';
 import { bind, freshSymbol } from '../session.ts';
 import { bernoulliNumbers } from './bernoulli.ts';
 import { type PowerTerm, rationalOf } from './summand.ts';

@@ -2,9 +2,8 @@
 import { build, dependsOn, type Expression, type IndexedNode, Q, substitute } from '../../expression/index.ts';
 import { Declined } from '../../outcome.ts';
 import { exponential, type Multi, multiply, sumOf } from '../../series/index.ts';
-import type { Evaluate } from '../calls.ts';
 import { infinityOf } from '../integrals/integral.ts';
-import type { Session } from '../session.ts';
+import type { Evaluate, Session } from '../session.ts';
 import { bernoulliNumbers } from './bernoulli.ts';
 import { eulerMaclaurin } from './euler-maclaurin.ts';
 import { powerSeries } from './power-series.ts';

@@ -3,8 +3,7 @@ import type { Element } from '../../algebra/types.ts';
 import { build, dependsOn, type Expression, type IndexedNode, Q, type Rational, substitute } from '../../expression/index.ts';
 import { Declined } from '../../outcome.ts';
 import { compose, growth, type Multi, multiply } from '../../series/index.ts';
-import type { Evaluate } from '../calls.ts';
-import type { Session } from '../session.ts';
+import type { Evaluate, Session } from '../session.ts';
 import { linear, rationalOf } from './summand.ts';
 
 interface Parts {

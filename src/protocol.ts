@@ -70,10 +70,14 @@ export interface FitRequest extends CommonRequest {
   readonly format?: string;
   readonly emit?: string;
   readonly basis?: 'even' | 'odd' | 'all';
+  /** So many leading coefficients of the expansion at 0 are kept as they are (1: the value there is exact). They must be numbers of the format. */
+  readonly exact?: number;
   readonly form?: 'horner' | 'estrin';
   readonly contraction?: 'any' | 'none' | 'fma';
   readonly method?: 'minimax' | 'taylor' | 'economized' | 'rational';
   readonly pieces?: number | 'auto';
+  /** Whether the argument of exp, log, sin, cos, atan or a constant power is reduced to a small interval first: `auto` (default) where a plain polynomial would need a degree above 12 for the tolerance. A degree is that on the small interval. */
+  readonly reduction?: 'auto' | 'none' | 'always';
   /** Code as a function (default) or as one expression in the variable. */
   readonly result?: 'function' | 'expression';
   /** `plot`: samples of the error in the measure. Made only when asked for. */
@@ -188,6 +192,8 @@ export interface ExpandAnswer {
   readonly at?: { readonly argument: string; readonly function: string; readonly sum: string; readonly error: string; readonly percent: string | null; /** Enclosures behind the shown digits. */ readonly enclosures?: unknown };
   readonly left?: ExpandAnswer;
   readonly branches?: readonly ExpandAnswer[];
+  /** Of an equation simplified in place: each replaced piece, as LaTeX, and its leading terms. `latex` and `text` are then the whole equation; `terms`, `remainder` and `numeric` are those of the piece where there is one, else `terms` is empty and `numeric` is left minus right side. */
+  readonly replaced?: readonly ReplacedAnswer[];
   /** Of a system of differential equations: all its unknown functions, as LaTeX, with their expansions. */
   readonly components?: readonly { readonly unknown: string; readonly expansion: ExpandAnswer }[];
   readonly value?: { readonly low: string; readonly high: string };
@@ -198,6 +204,15 @@ export interface ExpandAnswer {
   /** Samples of function and partial sum over the interval, doubles, for drawing only. */
   readonly plot?: PlotAnswer;
   readonly insertion?: InsertionAnswer;
+}
+
+/** A piece of an equation and what stands in its place. */
+export interface ReplacedAnswer {
+  readonly from: string;
+  /** With its O-term. */
+  readonly to: string;
+  /** |from - to|/|from|: `percent` at the request's `at`; with `interval` the proven `bound` of its supremum there, and a proven lower bound of that. */
+  readonly relativeError?: { readonly percent?: string | null; readonly bound?: string | null; readonly lower?: string | null };
 }
 
 /** The result as it would stand in the document that was asked about. */
@@ -287,6 +302,11 @@ export interface FitPieceAnswer {
   /** Proven total error on this piece, in the measure. */
   readonly bound: string;
 }
+/** How the argument is reduced, in words, and the polynomials in the reduced argument `r` that stand for `function` on [from, to]. */
+export interface FitReductionAnswer {
+  readonly method: string;
+  readonly kernels: readonly { readonly function: string; readonly from: string; readonly to: string; readonly coefficients: readonly CoefficientAnswer[]; readonly degree: number; readonly centre?: string }[];
+}
 export interface FitAnswer {
   readonly id?: string | number;
   readonly ok: true;
@@ -304,6 +324,8 @@ export interface FitAnswer {
   readonly denominator?: readonly CoefficientAnswer[];
   /** Where the interval was split: the polynomials in ascending order. `coefficients` and `centre` above are then those of the first one, `degree` and `bound` the largest. */
   readonly pieces?: readonly FitPieceAnswer[];
+  /** Where the argument is reduced first. `coefficients` and `centre` above are then those of the first kernel, `degree` the largest. */
+  readonly reduction?: FitReductionAnswer;
   readonly operations?: { readonly multiplications: number; readonly additions: number; readonly fused: number };
   readonly plot?: FitPlotAnswer;
   readonly speed?: FitSpeedAnswer;

@@ -5,7 +5,7 @@ import { build, type Expression, Q, type Rational } from '../expression/index.ts
 import { countOperations, estimatedSpeed, type Fit, fit, type FitProblem, type FloatFormat, formatByName } from '../fit/index.ts';
 import { describe } from '../functions/index.ts';
 import { budget, type Budget, failure, type Outcome, success } from '../outcome.ts';
-import type { CoefficientAnswer, ExpandRequest, FitAnswer, FitPieceAnswer, FitRequest, FitSpeedAnswer } from '../protocol.ts';
+import type { CoefficientAnswer, ExpandRequest, FitAnswer, FitPieceAnswer, FitReductionAnswer, FitRequest, FitSpeedAnswer } from '../protocol.ts';
 import { codeLanguage as isCode, readExact } from '../read/index.ts';
 import { encloseReal, rationalOf, real } from '../rigorous/index.ts';
 import { hexFloat, shortestDecimal, toPlain } from '../write/index.ts';
@@ -72,8 +72,10 @@ function problemOf(request: FitRequest, target: Expression, variable: string, so
     contraction: request.contraction ?? 'any',
     method: request.method ?? 'minimax',
     pieces: request.pieces ?? 1,
+    ...(request.reduction ? { reduction: request.reduction } : {}),
     intervalText: [plainEnd(request.interval[0]), plainEnd(request.interval[1])],
     ...(request.basis ? { basis: request.basis } : {}),
+    ...(request.exact ? { exact: request.exact } : {}),
     ...(request.result ? { result: request.result } : {}),
   });
 }
@@ -131,7 +133,8 @@ function answerOf(found: Fit, problem: FitProblem, request: FitRequest, constant
     assumptions: [...constants, ...found.assumptions],
     operations: countOperations(found.program),
     ...speedOf(found, problem),
-    ...(request.details?.includes('plot') ? { plot: fitPlot(found, problem, time) } : {}),
+    ...(found.reduction ? { reduction: reductionAnswer(found, found.reduction) } : {}),
+    ...(request.details?.includes('plot') && !found.reduction ? { plot: fitPlot(found, problem, time) } : {}),
     ...centreOf(found.centre, found.format),
     ...(found.denominator ? { denominator: coefficients(found.denominator, found.format) } : {}),
     ...(found.pieces ? { pieces: found.pieces.map((piece): FitPieceAnswer => ({ from: endText(piece.low, problem.low, problem, 0), to: endText(piece.high, problem.high, problem, 1), coefficients: coefficients(piece.terms, found.format), degree: piece.degree, bound: up(piece.error.total), ...centreOf(piece.centre, found.format) })) } : {}),
@@ -139,6 +142,11 @@ function answerOf(found: Fit, problem: FitProblem, request: FitRequest, constant
 }
 
 const centreOf = (centre: Rational, format: FitProblem['format']): { readonly centre?: string } => (Q.isZero(centre) ? {} : { centre: format.kind === 'float' ? shortestDecimal(centre, format.name) : up(centre) });
+
+const reductionAnswer = ({ format }: Fit, { method, kernels }: NonNullable<Fit['reduction']>): FitReductionAnswer => ({
+  method,
+  kernels: kernels.map(({ function: f, low, high, terms, degree, centre }) => ({ function: toPlain(f), from: Q.toText(low), to: Q.toText(high), coefficients: coefficients(terms, format), degree, ...centreOf(centre, format) })),
+});
 
 function speedOf({ program, format }: Fit, problem: FitProblem): { readonly speed?: FitSpeedAnswer } {
   const speed = estimatedSpeed(problem.function, program, format.name, problem.language);

@@ -62,11 +62,13 @@ const SPECIFIC: Readonly<Record<Request['ask'], Readonly<Record<string, Check>>>
     format: text,
     emit: text,
     basis: oneOf('even', 'odd', 'all'),
+    exact: count(0, 16),
     form: oneOf('horner', 'estrin'),
     contraction: oneOf('any', 'none', 'fma'),
     method: oneOf('minimax', 'taylor', 'economized', 'rational'),
     result: oneOf('function', 'expression'),
     details: texts,
+    reduction: oneOf('auto', 'none', 'always'),
     pieces: (v) => (v === 'auto' ? null : count(1, 1000)(v)),
   },
   guard: {

@@ -93,15 +93,31 @@ export function fitCode({ branches, variable, language, format, name, comment, e
     const body = wrap ? `${wrap[0]}${written.value.text}${wrap[1]}` : written.value.text;
     return { code: body, body, imports: written.value.imports };
   }
-  // Without declared types the argument decides in which format the operations round.
-  const untyped = row.floats[format.name]?.wrap !== undefined && row.floats[format.name]?.name === '';
-  const converted: Statement[] = untyped ? [{ kind: 'let', name: variable, value: build.symbol(variable), rounded: true }] : [];
   const statements = ({ steps, result }: Program): Statement[] => [...steps.map((step): Statement => ({ kind: 'let', ...step })), { kind: 'return', value: result, rounded: computesInDoubles(row) }];
   const body: Statement[] = branches.flatMap(({ below, program }, k): Statement[] => {
     if (k === branches.length - 1) return statements(program);
     return [{ kind: 'if', condition: { kind: 'relation', sides: [build.symbol(variable), build.number(below)], relations: ['<='] }, then: statements(program) }];
   });
-  const written = functionCode({ name, parameters: [variable], body: [...converted, ...body] }, options);
+  return wholeFunction({ name, parameters: [variable], body, language, format, comment });
+}
+
+export interface FunctionRequest {
+  readonly name: string;
+  readonly parameters: readonly string[];
+  readonly body: readonly Statement[];
+  readonly language: string;
+  readonly format: FloatFormat;
+  readonly comment: readonly string[];
+}
+
+/** A function of floats with its comment, its parameters converted to the format first where the language declares no types. */
+export function wholeFunction({ name, parameters, body, language, format, comment }: FunctionRequest): FitCodeText {
+  const row = rowFor(language);
+  const options: CodeOptions = { language, format: format.name, literal: { hexadecimal: 'where inexact' } };
+  // Without declared types the argument decides in which format the operations round.
+  const untyped = row.floats[format.name]?.wrap !== undefined && row.floats[format.name]?.name === '';
+  const converted = untyped ? parameters.map((p): Statement => ({ kind: 'let', name: p, value: build.symbol(p), rounded: true })) : [];
+  const written = functionCode({ name, parameters, body: [...converted, ...body] }, options);
   if (!written.ok) throw new Declined(written.error.code, written.error.message);
   const text = [...commentLines(row.id, comment), ...written.value.text.split('\n').flatMap((line) => wrapCode(line, row))].join('\n');
   const { imports } = written.value;

@@ -1,9 +1,9 @@
 /** A fit as asked for: the polynomial, the program in the target language, what was proved, what was assumed. */
-import { type Expression, Q, type Rational } from '../expression/index.ts';
+import { build, type Expression, Q, type Rational } from '../expression/index.ts';
 import { attempt, type Budget, Declined, type Outcome } from '../outcome.ts';
 import { real } from '../rigorous/index.ts';
-import { codeLanguage, type PolynomialTerm, toPlain } from '../write/index.ts';
-import { codeFormat, type FitCodeText, fitCode, functionName, fusing, machineArithmetic, rowFor } from './code.ts';
+import { codeLanguage, type PolynomialTerm, type Statement, toPlain } from '../write/index.ts';
+import { codeFormat, type FitCodeText, fitCode, functionName, fusing, machineArithmetic, rowFor, wholeFunction } from './code.ts';
 import { fixedCode, requireIntegers } from './fixedCode.ts';
 import { fitFixedPoint } from './fixedFit.ts';
 import type { FixedFormat, FloatFormat, NumberFormat } from './format.ts';
@@ -12,6 +12,7 @@ import { splitFit } from './pieces.ts';
 import { type PolynomialFit, fitPolynomial, type PolynomialProblem } from './polynomialFit.ts';
 import type { Program } from './program.ts';
 import type { FitMeasure, ProvedError } from './proof.ts';
+import { LOCALS, needsHighDegree, notReducible, type Reduced, reduce, reducible, type ReductionProblem } from './reduce/index.ts';
 import type { Basis } from './search.ts';
 
 export interface FitProblem {
@@ -32,6 +33,10 @@ export interface FitProblem {
   readonly method: 'minimax' | 'taylor' | 'economized' | 'rational';
   readonly pieces: number | 'auto';
   readonly basis?: Basis;
+  /** Leading coefficients of the expansion at 0 that are kept as they are; 0 must lie in the interval. */
+  readonly exact?: number;
+  /** Whether the argument is reduced first: `auto` (default) where a plain polynomial would need a high degree for the tolerance; the degree asked for is then that on the small interval. */
+  readonly reduction?: 'auto' | 'none' | 'always';
   /** How the interval is written in the comment. */
   readonly intervalText: readonly [string, string];
   readonly result?: 'function' | 'expression';
@@ -49,6 +54,8 @@ export interface Fit {
   readonly error: ProvedError;
   /** In ascending order where the interval was split; `terms`, `centre` and `program` are then those of the first one, `error` and `degree` the largest. */
   readonly pieces?: readonly PieceFit[];
+  /** Where the argument is reduced first: how, and the polynomials on the small interval in r; `terms` and `centre` are those of the first one. */
+  readonly reduction?: { readonly method: string; readonly kernels: readonly KernelFit[] };
   /** How it was proved, in words. */
   readonly method: string;
   readonly code: FitCodeText;
@@ -65,6 +72,16 @@ export interface PieceFit {
   readonly error: ProvedError;
 }
 
+/** A polynomial in r, the reduced argument: what it stands for (an expression in r) and where. */
+export interface KernelFit {
+  readonly function: Expression;
+  readonly low: Rational;
+  readonly high: Rational;
+  readonly terms: readonly PolynomialTerm[];
+  readonly degree: number;
+  readonly centre: Rational;
+}
+
 /** Fails with bad-request (what cannot be fitted and why), undecided (nothing could be proved), over-budget. */
 export const fit = (problem: FitProblem, budget: Budget): Outcome<Fit> => attempt(() => fitted(problem, budget));
 
@@ -78,6 +95,69 @@ function fitted(problem: FitProblem, budget: Budget): Fit {
   const shared = { ...problem, format, ...withOperations(language, format), fma: fused === 'exactly', writtenFma: contraction === 'fma' };
   if (method === 'rational') return rational(problem, { ...shared, method: 'minimax' }, format, budget);
   const whole: PolynomialProblem = { ...shared, method };
+  const { reduction = 'auto' } = problem;
+  if (reduction === 'always' && (problem.pieces !== 1 || problem.result === 'expression')) throw new Declined('bad-request', 'Reduced arguments are written as one function; leave pieces and result out.');
+  if (reduction === 'none' || problem.pieces !== 1 || problem.result === 'expression') return plain(problem, whole, written, budget);
+  const asked: ReductionProblem = { whole, row, parameter: LOCALS.includes(parameterName(problem)) ? 'x' : parameterName(problem) };
+  const shape = reducible(asked);
+  const viaReduction = (): Fit => {
+    if (!shape) throw notReducible();
+    return reducedFit(problem, asked, reduce(asked, shape, budget), written);
+  };
+  if (reduction === 'always') return viaReduction();
+  const viaPolynomial = (): Fit => plain(problem, whole, written, budget);
+  if (!shape || !problem.tolerance || problem.basis) return viaPolynomial();
+  return needsHighDegree(asked, budget) ? firstOf(viaReduction, viaPolynomial) : firstOf(viaPolynomial, viaReduction);
+}
+
+/** The first way that is not declined; the reason of the first where neither is open. */
+function firstOf(way: () => Fit, other: () => Fit): Fit {
+  try {
+    return way();
+  } catch (declined) {
+    if (!(declined instanceof Declined) || declined.failure.code === 'over-budget' || declined.failure.code === 'needs-assumption') throw declined;
+    try {
+      return other();
+    } catch (second) {
+      if (second instanceof Declined && second.failure.code !== 'over-budget') throw declined;
+      throw second;
+    }
+  }
+}
+
+function reducedFit(problem: FitProblem, { whole, row, parameter }: ReductionProblem, { kernels, body, error, method }: Reduced, written: FloatFormat): Fit {
+  const [first] = kernels;
+  if (!first) throw new RangeError('no polynomial');
+  const { format } = whole;
+  const assumptions = assumptionsOf(problem, format);
+  const comment = commentOf(problem, format, error, assumptions, `By reduction: ${method}.`);
+  const code = wholeFunction({ name: functionName(wordsFor(problem.function), row.id), parameters: [parameter], body, language: problem.language, format: written, comment });
+  const list = kernels.map(({ function: f, low, high, found }): KernelFit => ({ function: f, low, high, terms: found.terms, degree: found.degree, centre: found.centre }));
+  return {
+    terms: first.found.terms,
+    format,
+    degree: Math.max(...list.map((k) => k.degree)),
+    centre: first.found.centre,
+    program: asProgram(body),
+    error,
+    reduction: { method, kernels: list },
+    method: `${methodText(problem)}; error of the reduced argument and of the reconstruction included (${method})`,
+    code,
+    assumptions,
+  };
+}
+
+/** The statements of the longest way through a body as steps: for counting operations. */
+function asProgram(body: readonly Statement[]): Program {
+  const steps = body.flatMap((s) => (s.kind === 'let' ? [{ name: s.name, value: s.value }] : []));
+  const last = body.at(-1);
+  return { steps, result: last?.kind === 'return' ? last.value : build.number(0) };
+}
+
+function plain(problem: FitProblem, whole: PolynomialProblem, written: FloatFormat, budget: Budget): Fit {
+  const { language, format: named } = problem;
+  if (named.kind === 'fixed') throw new RangeError('fixed point has its own way');
+  const format: FloatFormat = named;
   const parts = problem.pieces === 1 ? [{ low: problem.low, high: problem.high, found: fitPolynomial(whole, budget) }] : splitFit(whole, problem.pieces, budget);
   const [first] = parts;
   if (!first) throw new RangeError('no part was fitted');
@@ -194,7 +274,7 @@ function assumptionsOf({ language, contraction }: FitProblem, format: FloatForma
 const MEASURES: Readonly<Record<FitMeasure, string>> = { absolute: 'absolute error', relative: 'relative error', ulp: 'error in ulp' };
 const WIDTH = 92;
 
-function commentOf(problem: FitProblem, format: { readonly name: string; readonly argument?: string }, error: ProvedError, assumptions: readonly string[]): string[] {
+function commentOf(problem: FitProblem, format: { readonly name: string; readonly argument?: string }, error: ProvedError, assumptions: readonly string[], way?: string): string[] {
   const [low, high] = problem.intervalText;
   const total = real.rationalToDecimal(error.total, 4, 1);
   const subnormal = error.subnormal ? ` (where the function is below the smallest normal number: absolute error at most ${real.rationalToDecimal(error.subnormal, 4, 1)})` : '';
@@ -202,6 +282,7 @@ function commentOf(problem: FitProblem, format: { readonly name: string; readonl
   return [
     `${toPlain(problem.function)} for ${problem.variable.replace(/\\/g, '')} in [${low}, ${high}], ${format.name}.`,
     `Proven for every ${format.argument ?? `${format.name} argument`} in the interval, evaluation included: ${MEASURES[problem.measure].replace(' in ulp', '')} at most ${total}${unit}${subnormal}.`,
+    ...(way === undefined ? [] : [way]),
     `Assumes: ${assumptions.join('; ')}.`,
     'Valid only on this interval and in this format. In safety-related code follow your own standards and have it reviewed by qualified people.',
   ].flatMap(filled);

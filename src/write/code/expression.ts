@@ -6,6 +6,7 @@ import { isRepresentable, type FloatFormat } from '../float.ts';
 import { splitSign } from '../layout.ts';
 import { Binding, type Piece } from '../linear.ts';
 import { identifierOf } from '../symbols.ts';
+import { type BinaryCall, binaryCall, isBinaryCall } from './binary.ts';
 import { CONSTANT_VALUES } from './constants.ts';
 import { codeLanguage, type CallStyle, type LanguageRow } from './languages.ts';
 import { literal } from './literal.ts';
@@ -219,11 +220,19 @@ class Writer implements CodeWriter {
   #call(id: string, args: readonly Expression[]): Piece {
     const [a, b, c] = args;
     if (id === 'fma' && a && b && c) return this.#fused(a, b, c);
+    if (isBinaryCall(id) && a) return this.#binary(id, a);
     const found = codeWriting(this.row.family, id, args);
     if (found) return this.#library(found.name, found.args);
     const definition = describe(id)?.definition;
     if (definition) return this.write(definition(args));
     throw new Declined('unknown-function', `${this.row.title} has no library function for ${describe(id)?.title ?? id}; choose another language or expand it first.`);
+  }
+
+  #binary(id: BinaryCall, a: Expression): Piece {
+    const { text, imports } = binaryCall(this.row, id, this.format, enclosed(this.write(a), Binding.Atom));
+    for (const line of imports) this.imports.add(line);
+    // A cast in front binds less than a bracket.
+    return { text, binding: /^\(\w+\)|^\(\w+\) | as f\d\d$/.test(text) ? Binding.Unary : Binding.Atom };
   }
 
   #fused(a: Expression, b: Expression, c: Expression): Piece {

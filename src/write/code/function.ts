@@ -103,7 +103,8 @@ function converted({ value, rounded }: { readonly value: Expression; readonly ro
 function writeStatements(body: readonly Statement[], writer: CodeWriter, shape: Shape, type: string, indent: string, lines: string[], name: string): void {
   if (body.length === 0) throw new Declined('bad-request', 'A function needs at least one statement.');
   for (const statement of body) {
-    if (statement.kind === 'let') lines.push(indent + shape.assign(statement.name, type, converted(statement, writer)));
+    if (statement.kind === 'let' && statement.value.kind === 'piecewise' && (!writer.row.choose || writer.row.id === 'fortran')) lines.push(...assigned(statement.name, statement.value.branches, writer, shape, type).map((line) => indent + line));
+    else if (statement.kind === 'let') lines.push(indent + shape.assign(statement.name, type, converted(statement, writer)));
     else if (statement.kind === 'return') lines.push(...shape.result(converted(statement, writer), name).map((line) => indent + line));
     else {
       lines.push(indent + shape.open(writer.write(statement.condition).text));
@@ -111,6 +112,17 @@ function writeStatements(body: readonly Statement[], writer: CodeWriter, shape: 
       if (shape.close !== null) lines.push(indent + shape.close);
     }
   }
+}
+
+/** A choice without a conditional expression: the value of the last branch, overwritten from the last condition to the first. */
+function assigned(name: string, branches: readonly { readonly condition: Expression | null; readonly value: Expression }[], writer: CodeWriter, shape: Shape, type: string): readonly string[] {
+  const set = writer.row.id === 'go' ? `${name} =` : null;
+  return [...branches].reverse().flatMap(({ condition, value }) => {
+    const text = writer.write(value).text;
+    if (!condition) return [shape.assign(name, type, text)];
+    const line = set ? `${set} ${text}` : shape.assign(name, type, text);
+    return [shape.open(writer.write(condition).text), shape.indent + line, ...(shape.close === null ? [] : [shape.close])];
+  });
 }
 
 function declared(body: readonly Statement[]): readonly string[] {

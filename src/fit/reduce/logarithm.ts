@@ -1,0 +1,108 @@
+/** A log(c x) for any x > 0: x = m 2^e with m about 1, f(x) = f(m) + e A ln 2. */
+import { build, type Expression, Q, type Rational, substitute } from '../../expression/index.ts';
+import { type Budget, Declined } from '../../outcome.ts';
+import { real } from '../../rigorous/index.ts';
+import { binaryExponent, type FloatFormat, powerOfTwo, roundTo, ulp } from '../format.ts';
+import type { Statement } from '../../write/index.ts';
+import { arithmeticOf, choice, fitKernel, greater, inParts, kernelStatements, lastRounded, largestIn, leastIn, absoluteOf, allowedOff, let_, REDUCED, type Reduced, type ReductionProblem, relation, tooSmall, valueRange } from './kernel.ts';
+import { halfUlp, roundedUp } from './parts.ts';
+import { CONSTANT_BITS, constantBall } from './recognise.ts';
+
+/** Significands above this are halved: sqrt(2) with eight bits. */
+export const HALVED_ABOVE = Q.rational(181, 128);
+
+/** x = m 2^e, exactly: m in (HALVED_ABOVE / 2, HALVED_ABOVE] named `r`, e named `e`. Subnormal numbers are first made normal. */
+export function decomposed(x: Expression, low: Rational, { emin, precision }: FloatFormat): readonly Statement[] {
+  const small = Q.compare(low, powerOfTwo(emin)) < 0;
+  const v = small ? build.symbol('v') : x;
+  const isSmall = relation(x, '<', powerOfTwo(emin));
+  const s = build.symbol('s');
+  const large = relation(s, '>', HALVED_ABOVE);
+  const exponent = build.call('binary-exponent', v);
+  return [
+    ...(small ? [let_('v', choice([isSmall, build.product(x, build.number(powerOfTwo(precision)))], [null, x])), let_('d', choice([isSmall, build.number(-precision)], [null, build.number(0)]))] : []),
+    let_('s', build.call('significand', v)),
+    let_('c', small ? build.sum(exponent, build.symbol('d')) : exponent),
+    let_(REDUCED, choice([large, build.product(s, build.number(Q.HALF))], [null, s])),
+    let_('e', choice([large, build.sum(build.symbol('c'), build.number(1))], [null, build.symbol('c')])),
+  ];
+}
+
+/** Exponents e of x = m 2^e on [low, high]. */
+export function exponentRange(low: Rational, high: Rational): readonly [number, number] {
+  const exponent = (x: Rational): number => {
+    const e = binaryExponent(x);
+    return Q.compare(Q.divide(x, powerOfTwo(e)), HALVED_ABOVE) > 0 ? e + 1 : e;
+  };
+  return [exponent(low), exponent(high)];
+}
+
+export function reduceLogarithm(problem: ReductionProblem, factor: Expression, budget: Budget): Reduced {
+  const { whole, row, parameter } = problem;
+  const { low, high, measure, format, variable } = whole;
+  if (Q.signOf(low) <= 0) throw new Declined('bad-request', 'The logarithm has no real value at an end of the interval; take an interval of positive numbers.');
+  const arithmetic = arithmeticOf(whole);
+  const { operations, result } = arithmetic;
+  const a = constantBall(factor);
+  const step = a && real.multiply(a, real.logTwo(CONSTANT_BITS), CONSTANT_BITS);
+  if (!a || !step) throw new Declined('bad-request', 'The factor of this logarithm is not known; give it as an exact number.');
+  const [least, most] = exponentRange(low, high);
+  const count = Math.max(Math.abs(least), Math.abs(most), 1);
+  const middle = Q.divide(Q.add(real.lower(step), real.upper(step)), Q.rational(2));
+  const unit = powerOfTwo(binaryExponent(middle) - (format.precision - count.toString(2).length) + 1);
+  // e times the first part is exact.
+  const first = Q.multiply(Q.rational(Q.floor(Q.add(Q.divide(middle, unit), Q.HALF))), unit);
+  const second = roundTo(Q.subtract(middle, first), format) ?? Q.ZERO;
+  const missing = Q.add(Q.absolute(Q.subtract(middle, Q.add(first, second))), Q.subtract(real.upper(step), real.lower(step)));
+  const f = substitute(whole.function, variable, build.symbol(REDUCED));
+  const window = { low: Q.divide(HALVED_ABOVE, Q.rational(2)), high: HALVED_ABOVE };
+  const largest = roundedUp([window.low, window.high].map((x) => valueRange(f, REDUCED, x)).reduce((m, v) => (v ? greater(m, largestIn(v)) : m), Q.ZERO));
+  const ends = [low, high].map((x) => valueRange(whole.function, variable, x));
+  const [atLow, atHigh] = ends;
+  const atOne = valueRange(f, REDUCED, Q.ONE);
+  if (!atLow || !atHigh || !atOne) throw new Declined('bad-request', 'The function has no real value at an end of the interval; take an interval of positive numbers.');
+  const size = greater(largestIn(atLow), largestIn(atHigh));
+  const zeroAtOne = Q.isZero(atOne.low) && Q.isZero(atOne.high);
+  const leastAtEnds = Q.signOf(atLow.low) * Q.signOf(atHigh.high) > 0 && Q.signOf(atLow.high) * Q.signOf(atHigh.low) > 0 ? greater(Q.ZERO, Q.compare(leastIn(atLow), leastIn(atHigh)) < 0 ? leastIn(atLow) : leastIn(atHigh)) : Q.ZERO;
+  const relative = measure !== 'absolute';
+  if (relative && !zeroAtOne && Q.isZero(leastAtEnds)) throw new Declined('bad-request', 'The function has a zero on this interval other than 1, where no relative error can be kept after the reduction; ask for the absolute measure.');
+  const inner = relative && zeroAtOne ? measure : 'absolute';
+  // |f| where e = n is not zero.
+  const leastFor = (n: number): Rational => greater(leastAtEnds, zeroAtOne ? Q.subtract(Q.multiply(Q.rational(Math.abs(n)), Q.absolute(Q.subtract(middle, unit))), largest) : Q.ZERO);
+  /** What everything but the polynomial is off by. */
+  const spent = (n: number, kernelError: Rational): Rational => {
+    const lowPart = Q.multiply(Q.rational(Math.abs(n)), Q.absolute(second));
+    return Q.add(Q.add(Q.multiply(Q.rational(Math.abs(n)), missing), Q.multiply(lowPart, powerOfTwo(-operations.precision))), halfUlp(Q.add(Q.multiply(Q.add(lowPart, largest), Q.rational(17, 16)), kernelError), operations));
+  };
+  const whenOff = (kernelError: Rational): Rational => {
+    let worst = Q.ZERO;
+    for (let n = least; n <= most; n += 1) {
+      if (n === 0) continue;
+      const off = Q.add(kernelError, spent(n, kernelError));
+      const reach = Q.add(Q.multiply(Q.rational(Math.abs(n)), Q.absolute(middle)), largest);
+      worst = greater(worst, lastRounded(off, leastFor(n), Q.compare(reach, size) < 0 ? reach : size, measure, arithmetic));
+    }
+    return worst;
+  };
+  const whenZero = (kernelError: Rational): Rational => {
+    if (least > 0 || most < 0) return Q.ZERO;
+    return inner === measure ? kernelError : Q.divide(kernelError, measure === 'ulp' ? ulp(leastAtEnds, result) : leastAtEnds);
+  };
+  const totalOf = (kernelError: Rational): Rational => greater(whenOff(absoluteOf(kernelError, inner, largest, format)), whenZero(kernelError));
+  const goal = whole.tolerance && allowedOff(totalOf, whole.tolerance, relative && inner === 'absolute' ? Q.multiply(whole.tolerance, size) : whole.tolerance);
+  if (whole.tolerance && goal && Q.isZero(goal)) throw tooSmall(whole, whole.tolerance);
+  const kernel = fitKernel(problem, { function: f, ...window, measure: inner, ...(goal ? { tolerance: goal } : {}) }, budget);
+  const { error } = kernel.found;
+  const total = totalOf(error.total);
+  const { steps, value } = kernelStatements(kernel.found.writtenProgram);
+  const e = build.symbol('e');
+  const times = (part: Rational): Expression => build.product(e, build.number(part));
+  const sum = Q.isZero(second) ? value : build.sum(times(second), value);
+  const approximation = inner === measure ? error.approximation : Q.ZERO;
+  return {
+    kernels: [kernel],
+    body: [...decomposed(build.symbol(parameter), low, operations), ...steps, { kind: 'return', value: build.sum(sum, times(first)), rounded: row.family === 'javascript' }],
+    error: inParts(total, Q.compare(approximation, total) < 0 ? approximation : total, Q.ZERO, error.subnormal),
+    method: `${parameter} = r 2^e exactly, ${Q.toText(window.low)} < r <= ${Q.toText(window.high)}, e in ${least}..${most}; result p(r) + e T, T = ${Q.toDouble(middle).toPrecision(6)} in two parts, the first times e exact`,
+  };
+}

@@ -23,6 +23,8 @@ export interface DifferenceProblem {
   readonly cancelled?: number;
   /** Ratio of upper to lower bound to stop at; default 1.001. */
   readonly settled?: number;
+  /** log2 of a positive distance: nearer to an end of the interval the function is not asked for, except at the end itself (by its limit). Floats have such a distance. */
+  readonly nearest?: number;
   readonly budget: Budget;
 }
 
@@ -86,7 +88,7 @@ function difference(problem: DifferenceProblem): DifferenceBound {
     }
   }
   if (tasks.length > 0) {
-    const result = refinePieces(tasks, lower, n, { variable: problem.variable, measure, slack: slack / 2, most: MOST_PIECES, length: LENGTH, check });
+    const result = refinePieces(tasks, lower, n, { variable: problem.variable, measure, slack: slack / 2, most: MOST_PIECES, length: LENGTH, check, ...(problem.nearest === undefined ? {} : { nearest: problem.nearest }) });
     if (result.upper === null) throw new Declined('undecided', 'No bound of the error could be proved on this interval; the function may be singular there. Take a smaller interval.');
     lower = r.lowerEnd(r.maximum(lower, result.lower));
     upper = r.upperEnd(r.maximum(upper, result.upper));

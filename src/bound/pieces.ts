@@ -2,7 +2,7 @@
 import { type Expression, substitute } from '../expression/index.ts';
 import type { Expansion } from '../expand/index.ts';
 import { type Model, modelArithmetic } from '../rigorous/index.ts';
-import { middleModel, modelOf } from './local.ts';
+import { logModelOf, middleModel, modelOf } from './local.ts';
 import { exactNear } from './exactNear.ts';
 import type { Numbers } from './numbers.ts';
 import { isExactlyZero } from './region.ts';
@@ -40,6 +40,8 @@ export interface PieceOptions {
   readonly most: number;
   readonly length: number;
   readonly check: () => void;
+  /** log2 of the least positive distance from an end at which f is asked for; at the end itself its limit is, where it has one. Absent: any distance. */
+  readonly nearest?: number;
 }
 
 /** The remainder (or its ratio to f) at one number; null where undefined. */
@@ -83,16 +85,36 @@ export function refinePieces<T>(tasks: readonly PieceTask<T>[], floor: T, n: Num
       const width = r.upperEnd(r.absolute(r.subtract(task.x1, task.x0)));
       const zeros = Array.from({ length: q - 1 }, () => r.zero);
       const leaf = m.withRange(m.polynomial([end, ...zeros, side === 'lower' ? width : r.negate(width)]), r.union(task.x0, task.x1));
-      const [f, s] = [modelOf(task.expansion.function, n, m, options.variable, leaf, vanishes, options.check), modelOf(task.sum, n, m, options.variable, leaf, vanishes, options.check)];
-      if (f === null || s === null) continue;
+      const s = modelOf(task.sum, n, m, options.variable, leaf, vanishes, options.check);
+      const logs = s && logModelOf(task.expansion.function, n, m, options.variable, leaf, vanishes, options.check);
+      const [f] = logs ?? [];
+      if (s === null || !logs || !f) continue;
+      const beside = logs.length === 1 ? r.zero : logarithmicPart(logs.slice(1), width);
+      if (beside === null || (logs.length > 1 && options.measure !== 'absolute')) continue;
       const remainder: Model<T> = m.subtract(f, s);
       const g = options.measure === 'absolute' ? remainder : m.divide(remainder, f);
       if (g === null || g.valuation < 0) continue;
       const result = supremumOfModel(r, g, { from: r.zero, to: r.one, floor: lower, slack: options.slack / 4, most: 60, check: options.check });
-      lower = r.lowerEnd(r.maximum(lower, result.lower));
-      return result.upper;
+      lower = r.lowerEnd(r.maximum(lower, r.lowerEnd(r.subtract(result.lower, beside))));
+      return r.upperEnd(r.add(result.upper, beside));
     }
     return null;
+  };
+  /**
+   * sup |sum of g_j(s) log(s)^j, j >= 1| over the distances asked for: logarithms that cancel leave models whose coefficients are zero up to the working precision.
+   * With a finite limit at the end the constant terms of all g_j are zero exactly, so that the part without logarithms has the same limit.
+   */
+  const logarithmicPart = (parts: readonly Model<T>[], width: T): T | null => {
+    if (options.nearest === undefined) return null;
+    const most = r.fromInteger(BigInt(Math.max(1, Math.ceil(Math.log2(r.toDouble(width))) + 1 - options.nearest)));
+    let sum = r.zero;
+    for (const [k, g] of parts.entries()) {
+      if (g.valuation < 0) return null;
+      // |log s| <= log2(1/s), and s >= 2^-most.
+      const { upper } = supremumOfModel(r, g, { from: r.zero, to: r.one, slack: 1, most: 20, check: options.check });
+      sum = r.add(sum, r.multiply(upper, r.powerInteger(most, k + 1) ?? r.one));
+    }
+    return r.upperEnd(sum);
   };
   /** Nothing but ranges: coarse, but it needs no derivative. */
   const rangeBound = (task: PieceTask<T>): T | null => {

@@ -5,12 +5,12 @@ import type { PolynomialTerm } from '../write/index.ts';
 import { type RoundedCoefficients, roundCoefficients } from './coefficients.ts';
 import { level } from './exchange.ts';
 import { fromFixed } from './fixed.ts';
-import { binaryExponent, type FloatFormat, powerOfTwo, roundTo } from './format.ts';
+import { binaryExponent, type FloatFormat, isRepresentable, powerOfTwo, roundTo } from './format.ts';
 import { shiftedResidual } from './grid.ts';
 import { type Arithmetic, canStandApart, polynomialProgram, type Program } from './program.ts';
 import { certifiedTerms, type CertifiedPolynomial, errorParts, type EvaluationProof, type FitMeasure, type InheritedError, type ProofProblem, type ProvedError, proveProgram } from './proof.ts';
 import { type Basis, basisFor, bestOfDegree, type Found, leastDegree, leastWithin, nextDegree, type Search } from './search.ts';
-import { type FitTarget, prepareTarget } from './target.ts';
+import { type FitTarget, prepareKept, prepareTarget } from './target.ts';
 import { economizedOfDegree, taylorOfDegree, taylorWithin } from './truncated.ts';
 
 export interface PolynomialProblem {
@@ -33,6 +33,8 @@ export interface PolynomialProblem {
   /** The code calls the language's multiply-add, which may still round twice. */
   readonly writtenFma: boolean;
   readonly basis?: Basis;
+  /** Leading coefficients of the expansion at 0 that are kept as they are. */
+  readonly exact?: number;
   readonly method: 'minimax' | 'taylor' | 'economized';
   /** What an error of the argument has changed the function by before the polynomial is evaluated. */
   readonly inherited?: InheritedError;
@@ -61,6 +63,7 @@ export function fitPolynomial(problem: PolynomialProblem, budget: Budget): Polyn
   if (Q.compare(low, high) >= 0) throw new Declined('bad-request', 'The interval of a fit needs two different ends, the smaller one first.');
   const atZero = Q.compare(low, Q.ZERO) <= 0 && Q.compare(Q.ZERO, high) <= 0;
   const middle = roundTo(Q.divide(Q.add(low, high), Q.rational(2)), format) ?? Q.ZERO;
+  if (problem.exact) return about(Q.ZERO, problem, budget);
   if (method === 'taylor' && !atZero) return about(middle, problem, budget);
   try {
     const plain = about(Q.ZERO, problem, budget);
@@ -87,7 +90,7 @@ export function fitPolynomial(problem: PolynomialProblem, budget: Budget): Polyn
 function about(centre: Rational, problem: PolynomialProblem, budget: Budget): PolynomialFit {
   const { low, high, format, method } = problem;
   const relative = problem.measure !== 'absolute';
-  const target = prepareTarget(problem.function, problem.variable, low, high, relative, WORKING_BITS, budget, centre);
+  const target = problem.exact ? keptTarget(problem, problem.exact, budget) : prepareTarget(problem.function, problem.variable, low, high, relative, WORKING_BITS, budget, centre);
   const search: Search = { target, relative, low: Q.subtract(low, target.zero), high: Q.subtract(high, target.zero), basis: basisFor(target, low, high, problem.basis) };
   const setting: Setting = { problem, search, proof: proofProblem(problem, search) };
   if (problem.degree !== undefined) {
@@ -115,6 +118,12 @@ function about(centre: Rational, problem: PolynomialProblem, budget: Budget): Po
   }
   const reached = Q.toDouble(best?.proof.total ?? Q.ONE).toExponential(2);
   throw new Declined('bad-request', `Rounding in ${format.name} takes this tolerance away: the smallest proven error is ${reached}; allow a larger tolerance or a wider format.`);
+}
+
+function keptTarget(problem: PolynomialProblem, count: number, budget: Budget): FitTarget {
+  if (problem.method !== 'minimax') throw new Declined('bad-request', 'Leading coefficients are kept by the method minimax; truncated expansions keep all of them anyway.');
+  const { low, high, format } = problem;
+  return prepareKept(problem.function, problem.variable, low, high, count, (q) => isRepresentable(q, format), WORKING_BITS, budget);
 }
 
 interface Setting {
@@ -163,12 +172,13 @@ function roundedTerms({ problem, search }: Setting, found: Found, budget: Budget
   const { format, method } = problem;
   const rounded: RoundedCoefficients | null = roundCoefficients(found, format, method === 'taylor', budget);
   if (!rounded) throw new Declined('bad-request', `A coefficient is beyond the range of ${format.name}; take another format or interval.`);
-  return shiftBy(rounded.values, found.problem, search.target.order);
+  return [...search.target.kept, ...shiftBy(rounded.values, found.problem, search.target.order)];
 }
 
 /** The polynomial with its first coefficient rounded and the next one a power of two, the others fitted again; null where that does not apply or settle. */
 function exactlyLed({ problem, search }: Setting, { problem: { grid, powers }, result }: Found, budget: Budget): readonly PolynomialTerm[] | null {
-  const { order } = search.target;
+  const { order, kept } = search.target;
+  if (kept.length > 0) return null;
   const power = (k: number): number => (powers[k] ?? 0) + order;
   const lead = power(0) === 0 ? 1 : 0;
   if (power(lead) > 2 || power(lead) !== (lead === 1 ? power(1) : 1) || powers.length <= lead + 1) return null;
@@ -210,11 +220,11 @@ function bestProgram({ problem, search, proof }: Setting, found: Found, terms: r
 
 function finished({ search, proof }: Setting, { found, terms, polynomial, program, writtenProgram, proof: total }: Candidate, budget: Budget): PolynomialFit {
   const { target, basis } = search;
-  const unrounded = shiftBy(
+  const unrounded = [...target.kept, ...shiftBy(
     found.result.coefficients.map((c) => fromFixed(c, found.problem.grid.bits)),
     found.problem,
     target.order,
-  );
+  )];
   const ideal = certifiedTerms(unrounded, proof, budget);
   return { target, terms, unrounded, degree: found.degree, basis, centre: target.zero, program, writtenProgram, error: errorParts(total, polynomial, ideal, proof, budget) };
 }

@@ -67,10 +67,17 @@ export function certify(approximation: Expression, problem: ProofProblem, budget
     measure: part || problem.measure === 'absolute' ? 'absolute' : 'relative',
     ...(problem.through && inside ? { through: problem.centre } : {}),
     settled,
+    ...nearestArgument([low, high], problem.arithmetic),
     budget,
   });
   if (!result.ok) throw new Declined(result.error.code, result.error.message);
   return result.value;
+}
+
+/** Floats are multiples of the smallest subnormal number; where both ends are, no other float is nearer to them than that. */
+function nearestArgument(ends: readonly Rational[], { operations }: Arithmetic): { readonly nearest?: number } {
+  const exponent = operations.emin - operations.precision + 1;
+  return ends.every((q) => Q.multiply(q, powerOfTwo(-exponent)).den === 1n) ? { nearest: exponent } : {};
 }
 
 /** What is known of a polynomial in one measure, whatever program evaluates it. */

@@ -2,7 +2,7 @@
 import { Q, type Rational } from '../expression/index.ts';
 import { type Budget, Declined } from '../outcome.ts';
 import { exchange, type ExchangeProblem, type ExchangeResult } from './exchange.ts';
-import { type Fixed, magnitude } from './fixed.ts';
+import { type Fixed, magnitude, toFixed } from './fixed.ts';
 import { type Grid, inUnit, sampleGrid } from './grid.ts';
 import type { FitTarget } from './target.ts';
 
@@ -71,8 +71,21 @@ function sampledGrid({ target, relative, low, high, basis }: Search, count: numb
     for (let k = 0; k < target.order; k += 1) value = (value * u) >> shift;
     return value;
   };
+  /** |u^s / f| with the kept terms in f, both without the lowest power of f. */
+  const weightBeside = (u: Fixed, g: Fixed): Fixed => {
+    const lowest = target.kept[0]?.power ?? 0;
+    const to = (value: Fixed, n: number): Fixed => {
+      let product = value;
+      for (let k = 0; k < n; k += 1) product = (product * u) >> shift;
+      return product;
+    };
+    const f = target.kept.reduce((sum, { power: k, value }) => sum + to(toFixed(value, bits), k - lowest), to(g, target.order - lowest));
+    if (f === 0n) throw new Declined('bad-request', 'The function is zero where no relative error can be kept; ask for the absolute measure or another interval.');
+    return magnitude((to(one, target.order - lowest) << shift) / f);
+  };
   const weight = (u: Fixed, g: Fixed): Fixed => {
     if (!relative) return target.order === 0 ? one : magnitude(power(u));
+    if (target.kept.length > 0) return weightBeside(u, g);
     if (g === 0n) throw new Declined('bad-request', 'The function is zero where no relative error can be kept; ask for the absolute measure or another interval.');
     return (one << shift) / magnitude(g);
   };

@@ -15,6 +15,8 @@ export interface FitTarget {
   readonly order: number;
   /** Parity of f in x - z where it is known. */
   readonly parity: 'even' | 'odd' | null;
+  /** Leading terms that the polynomial keeps exactly, lowest power first: g is then that of f without them, over x^s. */
+  readonly kept: readonly { readonly power: number; readonly value: Rational }[];
   /** g at u = x - z, fixed point with `bits`. */
   readonly quotient: (u: Fixed) => Fixed;
   readonly bits: number;
@@ -103,9 +105,9 @@ function limitAt(f: Expression, variable: string, x: Rational, low: Rational, bi
 
 /**
  * Prepares f on [low, high]. With `divideOut` (relative measures) zeros are divided out: a zero at 0 or at another rational z that is proven;
- * a zero that is no such number is declined. Without a zero the polynomial is in x - centre. Throws Declined with `bad-request` for free parameters and for points without a value.
+ * a zero that is no such number is declined. Without a zero the polynomial is in x - centre. `leastOrder`: f is known to vanish there to this order, which is divided out in any measure. Throws Declined with `bad-request` for free parameters and for points without a value.
  */
-export function prepareTarget(f: Expression, variable: string, low: Rational, high: Rational, divideOut: boolean, bits: number, budget: Budget, centre: Rational = Q.ZERO): FitTarget {
+export function prepareTarget(f: Expression, variable: string, low: Rational, high: Rational, divideOut: boolean, bits: number, budget: Budget, centre: Rational = Q.ZERO, leastOrder = 0): FitTarget {
   const others = freeSymbols(f).filter((name) => name !== variable);
   if (others.length > 0) throw new Declined('needs-assumption', `A fit needs numbers: give a value for ${others.slice(0, 3).join(', ')}.`);
   const inside = (q: Rational): boolean => Q.compare(low, q) <= 0 && Q.compare(q, high) <= 0;
@@ -116,7 +118,8 @@ export function prepareTarget(f: Expression, variable: string, low: Rational, hi
   const shifted = Q.isZero(zero) ? f : substitute(f, variable, build.sum(build.symbol(variable), build.number(zero)));
   const parity = parityOf(shifted, variable);
   const local = inside(zero) ? orderAt(f, variable, zero, budget) : null;
-  const order = found && local ? local.order : divideOut && local ? local.order : parity === 'odd' && inside(Q.ZERO) && local && local.order > 0 ? 1 : 0;
+  const natural = found && local ? local.order : divideOut && local ? local.order : parity === 'odd' && inside(Q.ZERO) && local && local.order > 0 ? 1 : 0;
+  const order = Math.max(natural, leastOrder);
   const atZero = local && local.order === order ? encloseReal(local.leading, new Map(), bits + 64, describe) : null;
   const direct = (u: Fixed): Fixed => {
     const offset = fromFixed(u, bits);
@@ -135,7 +138,7 @@ export function prepareTarget(f: Expression, variable: string, low: Rational, hi
     return ballToFixed(quotient, bits);
   };
   const proxy = chebyshevProxy(direct, Q.subtract(low, zero), Q.subtract(high, zero), bits, Math.min(bits - 24, 140), budget);
-  return { function: f, variable, zero, order, parity, quotient: proxy ? proxy.evaluate : direct, bits };
+  return { function: f, variable, zero, order, parity, kept: [], quotient: proxy ? proxy.evaluate : direct, bits };
 }
 
 /** Rational zeros of f in the interval that are proven; a sign change that belongs to none of them is declined. */
@@ -192,3 +195,25 @@ function simplestBetween(a: Rational, b: Rational): Rational {
   return Q.add(Q.rational(floor), Q.reciprocal(rest));
 }
 
+
+const MOST_EXACT = 16;
+
+/**
+ * f with its first `count` coefficients at 0 kept as they are: what is left is of order x^count. Throws Declined with `bad-request` where 0 lies outside,
+ * where the expansion at 0 is no power series, or where one of the coefficients is no number of the format.
+ */
+export function prepareKept(f: Expression, variable: string, low: Rational, high: Rational, count: number, exact: (q: Rational) => boolean, bits: number, budget: Budget): FitTarget {
+  if (Q.compare(low, Q.ZERO) > 0 || Q.compare(Q.ZERO, high) > 0) throw new Declined('bad-request', 'Leading coefficients are kept at 0; take an interval that contains it.');
+  if (count > MOST_EXACT) throw new Declined('bad-request', `At most ${MOST_EXACT} leading coefficients can be kept; ask for fewer.`);
+  const result = expand({ function: f, variable: build.symbol(variable), point: build.number(Q.ZERO), side: 'both', order: Q.rational(count), assumptions: [] }, budget);
+  if (!result.ok || result.value.prefactor || result.value.left) throw new Declined('bad-request', 'The expansion at 0 is no power series there; no coefficients can be kept.');
+  const kept = result.value.terms.map((term) => {
+    const [power, value] = [rationalOf(term.power), rationalOf(term.coefficient)];
+    if (!power || power.den !== 1n || power.num < 0n || term.log !== 0 || term.scale) throw new Declined('bad-request', 'The expansion at 0 is no power series there; no coefficients can be kept.');
+    if (!value || !exact(value)) throw new Declined('bad-request', `The coefficient of the power ${power.num} is no number of the format; keep at most ${power.num} leading coefficients.`);
+    return { power: Number(power.num), value };
+  });
+  const x = build.symbol(variable);
+  const left = build.sum(f, ...kept.map(({ power, value }) => build.product(build.number(Q.negate(value)), build.power(x, power))));
+  return { ...prepareTarget(left, variable, low, high, false, bits, budget, Q.ZERO, count), function: f, kept };
+}

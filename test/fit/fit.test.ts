@@ -103,3 +103,22 @@ describe('what a page shows beside the answer', () => {
     expect(short.plot).toBeUndefined();
   });
 });
+
+describe('leading coefficients kept exact', () => {
+  it.each([
+    ['exp(x)', 2, 5, 'relative', ['1', '1']],
+    ['cos(x)', 1, 6, 'absolute', ['1']],
+    ['1/(1-x/2)', 2, 6, 'relative', ['1', '0.5']],
+  ] as const)('%s, %i of them', async (text, exact, degree, measure, leading) => {
+    const request = { text, interval: ['-1/2', '1/2'], degree, measure };
+    const [kept, free] = [await fitAnswer({ ...request, exact }), await fitAnswer(request)];
+    expect(kept.coefficients.slice(0, leading.length).map((c) => Number(c.value))).toEqual(leading.map(Number));
+    expect(kept.coefficients.length).toBe(free.coefficients.length);
+    expect(Number(kept.bound.approximation)).toBeGreaterThan(Number(free.bound.approximation));
+    expect(Number(kept.bound.approximation)).toBeLessThan(20 * Number(free.bound.approximation));
+  });
+  it('declines a coefficient that is no float', async () => {
+    const answer = await ask({ text: 'cos(x+1)', interval: ['-1/2', '1/2'], degree: 4, exact: 1 });
+    expect(answer.ok ? '' : answer.error.message).toContain('no number of the format');
+  });
+});

@@ -100,6 +100,7 @@ function render(document: vscode.TextDocument, consultation: Consultation, selec
   head.appendMarkdown(`\n\n${escapeMarkdown(answer.text.length > LONGEST_LINE ? `${answer.text.slice(0, LONGEST_LINE)} …` : answer.text)}`);
   if (answer.left) head.appendMarkdown(`\n\n${escapeMarkdown(vscode.l10n.t('From the left: {0}', answer.left.text))}`);
   head.appendMarkdown(`\n\n${figures(answer, consultation)}`);
+  if (consultation.unbounded !== undefined) head.appendMarkdown(`\n\n${escapeMarkdown(consultation.unbounded)}`);
   const foot = trusted();
   foot.appendMarkdown(links(link, answer));
   const contents = picture ? [head, picture, foot] : [head, foot];

@@ -140,10 +140,8 @@ export class Page implements vscode.Disposable {
   }
 
   async choose(question: Question): Promise<void> {
-    const merged: Record<string, unknown> = { ...this.#chosen, ...question };
-    for (const [key, value] of Object.entries(merged)) if (value === '' || value === null || value === undefined) delete merged[key];
-    if ('terms' in question) delete merged['order'];
-    this.#chosen = merged;
+    const merged = Object.entries({ ...this.#chosen, ...question }).filter(([, value]) => value !== '' && value !== null && value !== undefined);
+    this.#chosen = Object.fromEntries(merged.filter(([key]) => !(key === 'order' && 'terms' in question)));
     const document = this.#document();
     if (document && (question.variable || question.point)) {
       const settled = Object.fromEntries(Object.entries(question).filter(([key]) => ['variable', 'point', 'side'].includes(key)));
@@ -345,7 +343,7 @@ export class Page implements vscode.Disposable {
       ...(controls.variable === '' ? {} : { variable: controls.variable }),
     } as const;
     if (mode === 'fit' && interval) {
-      answer = await this.#services.client.ask<FitAnswer>({ ask: 'fit', ...common, interval, tolerance: controls.tolerance, measure: controls.measure, form: settings.form }, signal);
+      answer = await this.#services.client.ask<FitAnswer>({ ask: 'fit', ...common, interval, tolerance: controls.tolerance, measure: controls.measure, form: settings.form, details: ['plot'] }, signal);
     } else if (mode === 'guard') {
       answer = await this.#services.client.ask<GuardAnswer>({ ask: 'guard', ...common, point: controls.point || '0', ...(interval ? { interval } : {}) }, signal);
     }

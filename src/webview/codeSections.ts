@@ -4,11 +4,12 @@ import { type Child, h } from './dom.ts';
 import { shortened } from './figures.ts';
 import { t } from './language.ts';
 import type { CodeControls, Shown } from './messages.ts';
+import { fitErrorPlot } from './plot.ts';
 
 type Fitted = Extract<Shown, { readonly kind: 'fit' }>;
 type Guarded = Extract<Shown, { readonly kind: 'guard' }>;
 
-export function fitSection(shown: Fitted, into: HTMLElement, settle: (controls: CodeControls) => void): Child[] {
+export function fitSection(shown: Fitted, into: HTMLElement, width: number, settle: (controls: CodeControls) => void): Child[] {
   const { answer } = shown;
   const controls = codeControls('fit', shown.controls, settle);
   if (!answer) return [controls];
@@ -29,7 +30,8 @@ export function fitSection(shown: Fitted, into: HTMLElement, settle: (controls: 
       answer.operations && h('p', { class: 'muted' }, t('operations', answer.operations.multiplications, answer.operations.additions), answer.speed && `; ${t('speed', answer.speed.ratio)}`),
     ),
     into,
-    h('section', {}, h('h2', {}, `${t('bound')} (${bound.measure})`), h('table', { class: 'figures' }, h('tbody', {}, ...parts.map(([name, value]) => h('tr', {}, h('th', { scope: 'row' }, name), h('td', {}, value))), h('tr', { class: 'total' }, h('th', { scope: 'row' }, t('total')), h('td', {}, bound.total)))), h('p', { class: 'muted' }, bound.method)),
+    answer.plot && answer.plot.x.length > 1 && h('section', { class: 'plots' }, h('h2', {}, `${t('fitErrorPlot')} (${t(answer.plot.measure)})`), fitErrorPlot(answer.plot, width)),
+    h('section', {}, h('h2', {}, `${t('bound')} (${t(bound.measure)})`), h('table', { class: 'figures' }, h('tbody', {}, ...parts.map(([name, value]) => h('tr', {}, h('th', { scope: 'row' }, name), h('td', {}, value))), h('tr', { class: 'total' }, h('th', { scope: 'row' }, t('total')), h('td', {}, bound.total)))), h('p', { class: 'muted' }, bound.method)),
     code(answer.code),
     h(
       'details',

@@ -74,7 +74,7 @@ function content(now: PageState): Child[] {
     ...(shown.kind === 'nothing' ? [h('p', { class: 'muted message' }, t('empty'))] : []),
     ...(shown.kind === 'failure' ? failure(shown.message, shown.candidates, shown.asked) : []),
     ...(shown.kind === 'expansion' ? expansionSection(shown, into(now), Math.max(220, root.clientWidth - 2), choose) : []),
-    ...(shown.kind === 'fit' ? fitSection(shown, into(now), settle) : []),
+    ...(shown.kind === 'fit' ? fitSection(shown, into(now), Math.max(220, root.clientWidth - 2), settle) : []),
     ...(shown.kind === 'claims' ? claimsSection(shown, into(now), (index) => send({ kind: 'claim', index }), draw) : []),
     ...(shown.kind === 'guard' ? guardSection(shown, into(now), settle) : []),
     history(now),

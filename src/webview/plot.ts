@@ -1,10 +1,10 @@
 /** The two plots as SVG in the theme's colours, each with a title and a description in words. */
-import type { ExpandAnswer, PlotAnswer } from '../protocol.ts';
+import type { ExpandAnswer, FitPlotAnswer, PlotAnswer } from '../protocol.ts';
 import type { Question } from '../worker/desk/types.ts';
 import { h, svg } from './dom.ts';
 import { t } from './language.ts';
 import { shortened } from './figures.ts';
-import { decades, errors, noiseFloor, ordinate, pathThrough, powerOfTen, type Range, short, ticks, validity } from './plotMath.ts';
+import { decades, errors, noiseFloor, ordinate, pathThrough, powerOfTen, type Range, short, signedSpan, ticks, validity, worst } from './plotMath.ts';
 
 const HEIGHT = 148;
 const LEFT = 44;
@@ -47,7 +47,7 @@ function axes(area: Frame, yTicks: readonly { readonly at: number; readonly labe
   ];
 }
 
-function picture(width: number, title: string, description: string, content: readonly SVGElement[]): SVGElement {
+function picture(width: number, title: string, description: string, content: readonly (SVGElement | null)[]): SVGElement {
   serial += 1;
   const [titleId, descriptionId] = [`plot-title-${serial}`, `plot-description-${serial}`];
   return svg(
@@ -127,6 +127,41 @@ export function errorPlot(plot: PlotAnswer, answer: ExpandAnswer, asked: Questio
     image,
     h('figcaption', {}, key('error', t('error')), tolerance > 0 && key('tolerance', t('toleranceBand', asked.tolerance ?? '')), bound !== null && key('bound', t('provenBound', shortened(answer.bound?.value ?? '', 'above')))),
     words && h('p', { class: 'note' }, words),
+  );
+}
+
+/** The signed error of a polynomial between plus and minus the proven bound and the tolerance, in the unit of the measure. */
+export function fitErrorPlot(plot: FitPlotAnswer, width: number): HTMLElement {
+  const { bound, tolerance, measure } = plot;
+  const y = signedSpan(plot);
+  const area = frame(width, spanOf(plot.x), y);
+  const unit = measure === 'ulp' ? ' ulp' : '';
+  const peak = worst(plot.x, plot.error);
+  const drawn = tolerance !== null && tolerance < y.high;
+  const value = (size: number): string => `${short(size)}${unit}`;
+  const said = [
+    peak ? t('fitWorst', value(Math.abs(peak.error)), short(peak.at)) : '',
+    t('provenBound', value(bound)),
+    tolerance === null ? '' : drawn ? t('toleranceBand', value(tolerance)) : t('toleranceOutside', value(tolerance)),
+  ].filter(Boolean);
+  const level = (kind: string, size: number): SVGElement[] => [size, -size].map((at) => svg('line', { class: kind, x1: LEFT, x2: width - RIGHT, y1: area.toY(at).toFixed(1), y2: area.toY(at).toFixed(1) }));
+  const image = picture(width, t('fitErrorPlot'), said.join('; '), [
+    drawn ? svg('rect', { class: 'band', x: LEFT, width: Math.max(1, width - LEFT - RIGHT), y: area.toY(tolerance).toFixed(1), height: (area.toY(-tolerance) - area.toY(tolerance)).toFixed(1) }) : null,
+    ...axes(
+      area,
+      ticks(y, 4).map((at) => ({ at, label: short(at) })),
+    ),
+    ...(drawn ? level('tolerance', tolerance) : []),
+    ...level('bound', bound),
+    svg('path', { class: 'curve error', d: pathThrough(plot.x, plot.error, area.toX, area.toY, y) }),
+  ]);
+  return h(
+    'figure',
+    { id: 'fit-plot' },
+    image,
+    h('figcaption', {}, key('error', t('error')), key('bound', t('provenBound', value(bound))), drawn && key('tolerance', t('toleranceBand', value(tolerance)))),
+    h('p', { class: 'note' }, said.filter((part) => !part.startsWith(t('provenBound', value(bound)))).join('; ')),
+    h('p', { class: 'muted note' }, t('fitPlotNote')),
   );
 }
 

@@ -1,5 +1,5 @@
 /** Numbers behind the plots: ticks, paths, and where the sampled error keeps the tolerance. No drawing. */
-import type { PlotAnswer } from '../protocol.ts';
+import type { FitPlotAnswer, PlotAnswer } from '../protocol.ts';
 
 export interface Range {
   readonly low: number;
@@ -70,6 +70,26 @@ export function validity(x: readonly number[], error: readonly (number | null)[]
     }
   }
   return best;
+}
+
+/** Beyond so many bounds a tolerance would press the curve flat, and is told in words only. */
+const TOLERANCE_IN_SIGHT = 8;
+
+/** Symmetric about zero, with room for the bound, every sample and, where it is near enough, the tolerance. */
+export function signedSpan({ error, bound, tolerance }: FitPlotAnswer): Range {
+  const largest = Math.max(bound, ...error.filter(finite).map(Math.abs));
+  const shown = Math.max(largest, tolerance !== null && tolerance <= TOLERANCE_IN_SIGHT * largest ? tolerance : 0) || 1;
+  return { low: -1.15 * shown, high: 1.15 * shown };
+}
+
+/** The sample with the largest error in size. */
+export function worst(x: readonly number[], error: readonly (number | null)[]): { readonly at: number; readonly error: number } | null {
+  let found: { readonly at: number; readonly error: number } | null = null;
+  error.forEach((value, i) => {
+    const at = x[i];
+    if (finite(value) && at !== undefined && (!found || Math.abs(value) > Math.abs(found.error))) found = { at, error: value };
+  });
+  return found;
 }
 
 /** SVG path data through the points, broken where a value is missing or far outside. */

@@ -4,7 +4,7 @@ import { splitInterval } from '../../src/editor/interval.ts';
 import { escapeMarkdown, table } from '../../src/editor/markdown.ts';
 import { requestCommand } from '../../src/editor/requestCommand.ts';
 import { constantsText, shortened } from '../../src/webview/figures.ts';
-import { decades, errors, ordinate, pathThrough, powerOfTen, ticks, validity } from '../../src/webview/plotMath.ts';
+import { decades, errors, ordinate, pathThrough, powerOfTen, signedSpan, ticks, validity, worst } from '../../src/webview/plotMath.ts';
 
 describe('plots', () => {
   it('has round ticks inside the range', () => expect(ticks({ low: -0.3, high: 0.3 }, 4)).toEqual([-0.2, 0, 0.2]));
@@ -16,6 +16,14 @@ describe('plots', () => {
   it('finds none where there is none', () => expect(validity([0, 1], [1, null], 0.5)).toBeNull());
   it('measures relative errors, and none at a zero', () => expect(errors({ x: [0, 1], f: [0, 2], sum: [0, 1] }, true)).toEqual([null, 0.5]));
   it('breaks a curve at missing values', () => expect(pathThrough([0, 1, 2, 3], [0, 1, null, 1], (x) => x, (y) => y, { low: 0, high: 1 })).toBe('M0.0 0.0L1.0 1.0M3.0 1.0'));
+  it('shows bound and samples of a fit, and the tolerance where it is near', () => {
+    const plot = { x: [0, 1, 2], error: [0.1, null, -0.4], bound: 0.5, tolerance: 1, measure: 'ulp' } as const;
+    expect(signedSpan(plot)).toEqual({ low: -1.15, high: 1.15 });
+    expect(signedSpan({ ...plot, tolerance: 100 }).high).toBeCloseTo(0.575);
+    expect(signedSpan({ ...plot, error: [], bound: 0, tolerance: null })).toEqual({ low: -1.15, high: 1.15 });
+    expect(worst(plot.x, plot.error)).toEqual({ at: 2, error: -0.4 });
+    expect(worst([0], [null])).toBeNull();
+  });
   it('shows all of the function', () => {
     const { low, high } = ordinate({ x: [0, 1], f: [-1, 1], sum: [-100, 100] });
     expect(low).toBeLessThan(-1);

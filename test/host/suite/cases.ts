@@ -45,7 +45,7 @@ export const cases: Readonly<Record<string, () => Promise<void>>> = {
       const found = await hoverText(editor.document, new vscode.Position(4, 13));
       return found.includes('g²') ? found : null;
     });
-    check(text.includes('command:leadingOrder.fillInConstants') && text.includes('g = 9.81'), `the link is missing: ${text.slice(0, 900)}`);
+    check(text.includes('command:leadingOrder.fillInConstants') && text.replaceAll('\\', '').includes('g = 9.81'), `the link is missing: ${text.slice(0, 900)}`);
   },
 
   'hover picture is one SVG image': async () => {
@@ -201,7 +201,21 @@ export const cases: Readonly<Record<string, () => Promise<void>>> = {
     const warm: number[] = [];
     for (let i = 0; i < 20; i += 1) warm.push((await timed())[0]);
     const median = warm.sort((a, b) => a - b)[10] ?? 0;
-    console.log(`hover: cold ${cold.toFixed(0)} ms (${first.includes('x²') ? 'complete' : 'still computing'}), warm median ${median.toFixed(1)} ms`);
+    // What a hover without any answer of ours takes, and one over an expression that was never asked about.
+    const plain = (await open('latex', 'Words without mathematics.\n')).document;
+    const bare: number[] = [];
+    const fresh: number[] = [];
+    for (let i = 0; i < 9; i += 1) {
+      const began = performance.now();
+      await hoverText(plain, new vscode.Position(0, 8));
+      bare.push(performance.now() - began);
+      const other = await open('latex', `% leading-order: small x\n\\[ \\frac{\\cosh x - 1}{x^2 + ${i + 2}} \\]\n`);
+      const since = performance.now();
+      const text = await hoverText(other.document, new vscode.Position(1, 8));
+      fresh.push(text.includes('x²') ? performance.now() - since : Infinity);
+    }
+    const middle = (times: number[]): number => times.sort((a, b) => a - b)[Math.floor(times.length / 2)] ?? 0;
+    console.log(`hover: cold ${cold.toFixed(0)} ms (${first.includes('x²') ? 'complete' : 'still computing'}), again ${median.toFixed(1)} ms, of another expression ${middle(fresh).toFixed(0)} ms, the editor's own share ${middle(bare).toFixed(1)} ms`);
     check(cold < 2500, `the first hover took ${cold} ms; five times the aim of 500 ms is the limit`);
     check(median < 300, `later hovers took ${median} ms; five times the aim of 60 ms is the limit`);
   },
@@ -350,14 +364,14 @@ export const cases: Readonly<Record<string, () => Promise<void>>> = {
       const editor = await open(language, body);
       await wait(begins);
       const times: number[] = [];
-      for (let i = 0; i < 21; i += 1) {
+      for (let i = 0; i < 11; i += 1) {
         const began = performance.now();
         await editor.edit((builder) => builder.insert(new vscode.Position(i, 0), 'a'), { undoStopBefore: false, undoStopAfter: false });
         times.push(performance.now() - began);
       }
       await vscode.commands.executeCommand('workbench.action.revertAndCloseActiveEditor');
       console.log(`typing, ${language}: ${times.map((time) => time.toFixed(0)).join(' ')}`);
-      return times.sort((a, b) => a - b)[10] ?? 0;
+      return times.sort((a, b) => a - b)[5] ?? 0;
     };
     // The editor colours LaTeX at every edit, with or without an extension: the same document with the checks off is the measure.
     const plain = await medianOf('plaintext', 1200);

@@ -1,15 +1,18 @@
 /** Requests whose text is a differential equation: which of its solution's expansions is asked for. */
-import { type Assumption, build, type Expression, freeSymbols, type Rational, walk } from '../expression/index.ts';
-import { type DifferentialStatement, differentialStatement, expandSolution, type Expansion } from '../expand/index.ts';
+import { type Assumption, build, dependsOn, type Expression, freeSymbols, type Rational, walk } from '../expression/index.ts';
+import { type DifferentialStatement, differentialStatement, expandPerturbation, expandSolution, type Expansion } from '../expand/index.ts';
 import { type Budget, Declined, failure, type Outcome, success } from '../outcome.ts';
-import type { ExpandRequest } from '../protocol.ts';
-import { readAssumption } from '../read/index.ts';
+import type { ExpandAnswer, ExpandRequest } from '../protocol.ts';
+import { isBareName, isTruncated, readAssumption } from '../read/index.ts';
 import { readAllAssumptions } from './assumptions.ts';
 import { statedConditions, withValues } from './conditions.ts';
-import { type Point, readPoint } from './question.ts';
+import { expansionAnswer } from './expansionAnswer.ts';
+import { inPlaceAnswer } from './inPlace.ts';
+import { functionOf, type Point, readPoint } from './question.ts';
+import { readingAnswer } from './reading.ts';
 import type { SourceFormula } from './source.ts';
 
-type Solve = (size: { readonly terms?: number; readonly order?: Rational }) => Outcome<Expansion>;
+type Size = { readonly terms?: number; readonly order?: Rational };
 
 /** What a differential text asks for. */
 export interface DifferentialQuestion {
@@ -113,9 +116,51 @@ function splitAssumptions(texts: readonly string[], statement: DifferentialState
   return assumptions.ok ? success({ pieces, assumptions: assumptions.value }) : assumptions;
 }
 
-/** Solves the question for a number of terms or an order. */
-export function solverOf(question: DifferentialQuestion, time: Budget): Solve {
-  const { statement, assumptions, stated, unknown, point } = question;
-  const withStated = (outcome: Outcome<Expansion>): Outcome<Expansion> => (outcome.ok && stated.length > 0 ? success({ ...outcome.value, assumptions: [...outcome.value.assumptions, ...stated] }) : outcome);
-  return (size) => withStated(expandSolution({ statement, side: 'both', assumptions, ...(unknown === undefined ? {} : { unknown }), ...(point === undefined ? {} : { point }), ...size }, time));
+/** The solution that the question asks for, with so many terms or to an order. */
+export function solutionOf(question: DifferentialQuestion, size: Size, time: Budget): Outcome<Expansion> {
+  const { statement, assumptions, stated, unknown, point, variable } = question;
+  if (question.kind === 'perturbation' && variable) {
+    if (point !== undefined && !(typeof point === 'object' && point.kind === 'number' && point.value.num === 0n)) return failure('bad-request', 'A solution is expanded in a parameter that tends to 0; substitute a parameter that does.');
+    return withStated(expandPerturbation({ statement, variable, assumptions, ...size }, time), stated);
+  }
+  return withStated(expandSolution({ statement, side: 'both', assumptions, ...(unknown === undefined ? {} : { unknown }), ...(point === undefined ? {} : { point }), ...size }, time), stated);
+}
+
+const withStated = (outcome: Outcome<Expansion>, stated: readonly string[]): Outcome<Expansion> =>
+  outcome.ok && stated.length > 0 ? success({ ...outcome.value, assumptions: [...outcome.value.assumptions, ...stated] }) : outcome;
+
+const UNPROVEN = 'no error bound is proven for the solution of a differential equation; interval, tolerance and at are left aside';
+
+/** The answer to a text that holds a differential equation, or another equation that is to be simplified in place; null for every other text. */
+export function equationAnswer(request: ExpandRequest, source: SourceFormula, size: Size, time: Budget): Outcome<ExpandAnswer> | null {
+  const question = differentialQuestion(request, source);
+  if (question && !question.ok) return question;
+  if (question && question.value.kind !== 'in-place') {
+    const found = solutionOf(question.value, size, time);
+    if (!found.ok) return found;
+    const answer = expansionAnswer(found.value);
+    const left = request.interval !== undefined || request.tolerance !== undefined || request.at !== undefined ? [UNPROVEN] : [];
+    const reading = request.details?.includes('reading') ? { reading: readingAnswer(request, source, found.value) } : {};
+    return success({ ...answer, ...reading, assumptions: [...answer.assumptions, ...left] });
+  }
+  const formula = source.formula ?? source.expression;
+  const named = request.variable === undefined ? null : source.readSymbol(request.variable);
+  const variable = question?.value.variable ?? (named?.ok ? named.value : undefined);
+  if (!variable || (!question && !isPlainEquation(request, formula, variable))) return null;
+  return inPlaceAnswer(request, formula, variable, size, time);
+}
+
+/**
+ * Whether an equation without derivatives is to be simplified in place rather than a side of it expanded: it is set to zero, or the side that would be expanded
+ * does not hold the variable, or functions of the variable stand on both sides. A name = formula stays a formula.
+ */
+function isPlainEquation(request: ExpandRequest, formula: Expression, variable: Expression): boolean {
+  if (request.unknown !== undefined || formula.kind !== 'relation' || variable.kind !== 'symbol') return false;
+  const [left, right] = formula.sides;
+  if (!left || !right || formula.sides.length !== 2 || formula.relations[0] !== '=' || isTruncated(left) || isTruncated(right)) return false;
+  const isZero = (e: Expression): boolean => e.kind === 'number' && e.value.num === 0n;
+  const holds = (e: Expression): boolean => dependsOn(e, variable.name);
+  if (isZero(left) || isZero(right)) return true;
+  if (isBareName(left) && !(left.kind === 'symbol' && left.name === variable.name)) return false;
+  return holds(left) !== holds(right) ? !holds(functionOf(formula)) || holds(left) : holds(left) && request.selection === undefined;
 }

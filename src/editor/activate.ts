@@ -3,6 +3,7 @@ import * as vscode from 'vscode';
 import { type ClientOptions, createEngineClient, type EngineClient } from '../worker/client.ts';
 import { registerActions } from './actions.ts';
 import { registerCommands } from './commands.ts';
+import { Companions } from './companions.ts';
 import { Consultant } from './consultant.ts';
 import { registerEquationLinks } from './equationLinks.ts';
 import { registerHints } from './hints.ts';
@@ -45,7 +46,8 @@ export function activateWith(context: vscode.ExtensionContext, start: ClientOpti
     checksAside: true,
   });
   const memory = new Memory(context.workspaceState);
-  const services: Services = { context, client, consultant: new Consultant(client, memory), memory, status, log };
+  const companions = new Companions();
+  const services: Services = { context, client, consultant: new Consultant(client, memory, companions), companions, memory, status, log };
   const problems = new Problems(services);
   const pages = new Pages(services, problems);
   context.subscriptions.push(
@@ -53,6 +55,7 @@ export function activateWith(context: vscode.ExtensionContext, start: ClientOpti
     status,
     problems,
     pages,
+    companions,
     { dispose: () => client.dispose() },
     registerHover(services),
     registerActions(services, problems),

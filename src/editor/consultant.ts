@@ -3,6 +3,7 @@ import * as vscode from 'vscode';
 import type { Detail, ErrorAnswer } from '../protocol.ts';
 import type { EngineClient } from '../worker/client.ts';
 import type { ConsultAnswer, Place, Proposal, ProposalsRequest, Question } from '../worker/desk/types.ts';
+import type { Companions } from './companions.ts';
 import { engineLanguage } from './languages.ts';
 import type { Memory } from './memory.ts';
 import { type Settings, settingsFor } from './settings.ts';
@@ -22,9 +23,11 @@ const MERCY_MS = 1500;
 export class Consultant {
   readonly #client: EngineClient;
   readonly #memory: Memory;
+  readonly #companions: Companions;
   readonly #recent = new Map<string, { readonly promise: Promise<Consultation>; done: Consultation | null }>();
 
-  constructor(client: EngineClient, memory: Memory) {
+  constructor(client: EngineClient, memory: Memory, companions: Companions) {
+    this.#companions = companions;
     this.#client = client;
     this.#memory = memory;
   }
@@ -56,7 +59,9 @@ export class Consultant {
       details,
       budget_ms: settings.budget,
     } as const;
-    const promise = this.#client.consult(request, abort.signal).then((answer): Consultation => {
+    const companions = this.#companions.of({ uri: document.uri, text: request.text, language });
+    const asking = companions.then((files) => this.#client.consult({ ...request, files }, abort.signal));
+    const promise = asking.then((answer): Consultation => {
       cancelling?.dispose();
       const told: ConsultAnswer = 'answer' in answer ? answer : { answer, asked: {}, sources: {}, place: null, candidates: [], worthwhile: true };
       const consultation = { ...told, uri, version, selection, language };
@@ -86,7 +91,7 @@ export class Consultant {
   }
 
   #key(document: vscode.TextDocument, selection: Place, details: readonly Detail[], chosen: Question, settings: Settings): string {
-    return JSON.stringify([document.uri.toString(), document.version, document.languageId, selection, details, chosen, this.#memory.generation, settings.question, settings.smallQuantities]);
+    return JSON.stringify([document.uri.toString(), document.version, document.languageId, selection, details, chosen, this.#memory.generation, this.#companions.generation, settings.question, settings.smallQuantities]);
   }
 }
 

@@ -33,7 +33,8 @@ async function checkOne(services: Services, document: vscode.TextDocument, note:
   if (!equation) return warn(note, vscode.l10n.t('No file of the workspace has the label {0}.', label), 'note', vscode.DiagnosticSeverity.Warning);
   const at = equation.text.indexOf(`\\label{${label}}`) - 1;
   const ask = async (text: string, language: string, selection: Place): Promise<ReadingAnswer | string> => {
-    const told: ConsultAnswer | { readonly ok: false; readonly error: { readonly message: string } } = await services.client.consult({ desk: 'consult', text, language, selection, details: ['reading'] }, signal);
+    const files = language === 'latex' ? await services.companions.of({ uri: equation.uri, text, language }) : [];
+    const told: ConsultAnswer | { readonly ok: false; readonly error: { readonly message: string } } = await services.client.consult({ desk: 'consult', text, language, selection, files, details: ['reading'] }, signal);
     if (!('answer' in told)) return told.error.message;
     return told.answer.ok ? (told.answer.reading ?? '') : told.answer.error.message;
   };

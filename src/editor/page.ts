@@ -333,8 +333,10 @@ export class Page implements vscode.Disposable {
     const language = engineLanguage(document);
     const settings = settingsFor(document);
     const { place } = focus;
+    const text = document.getText();
     const common = {
-      text: document.getText(),
+      text,
+      files: await this.#services.companions.of({ uri: document.uri, text, language }),
       selection: place,
       language,
       emit: language === 'plain' || !isCode(language) ? 'c' : language,

@@ -76,9 +76,9 @@ export class Problems implements vscode.Disposable {
     const language = engineLanguage(document);
     const text = document.getText();
     const settings = settingsFor(document);
-    const answer = await this.#services.status.during(
-      this.#services.client.ask<CheckAnswer>({ ask: 'check', text, language, budget_ms: Math.max(settings.budget, 20_000) }, abort.signal),
-    );
+    const { client, companions, status } = this.#services;
+    const asking = companions.of({ uri: document.uri, text, language }).then((files) => client.ask<CheckAnswer>({ ask: 'check', text, language, files, budget_ms: Math.max(settings.budget, 20_000) }, abort.signal));
+    const answer = await status.during(asking);
     const notes = abort.signal.aborted ? null : await this.#services.client.consult({ desk: 'notes', text, language }, abort.signal);
     const read = notes && 'notes' in notes ? notes.notes : [];
     const against = abort.signal.aborted ? [] : await checkImplementations(this.#services, document, read, abort.signal);

@@ -1,6 +1,7 @@
 /** What the parts of the editor side share. */
 import type * as vscode from 'vscode';
 import type { EngineClient } from '../worker/client.ts';
+import type { Companions } from './companions.ts';
 import type { Consultant } from './consultant.ts';
 import type { Log } from './log.ts';
 import type { Memory } from './memory.ts';
@@ -10,6 +11,7 @@ export interface Services {
   readonly context: vscode.ExtensionContext;
   readonly client: EngineClient;
   readonly consultant: Consultant;
+  readonly companions: Companions;
   readonly memory: Memory;
   readonly status: Status;
   readonly log: Log;

@@ -11,21 +11,23 @@ const MOST_FILES = 2000;
 const LONGEST_FILE = 2_000_000;
 
 export async function checkWorkspace(services: Services): Promise<string | null> {
-  const files = await vscode.workspace.findFiles(FILES, '**/{node_modules,dist,out,build,target,.git}/**', MOST_FILES);
+  const found = await vscode.workspace.findFiles(FILES, '**/{node_modules,dist,out,build,target,.git}/**', MOST_FILES);
   const sections: string[] = [];
   const total = { claims: 0, hold: 0, fail: 0, undecided: 0, unread: 0 };
   const finished = await vscode.window.withProgress({ location: vscode.ProgressLocation.Window, title: vscode.l10n.t('Checking printed expansions'), cancellable: true }, async (progress, token) => {
     const abort = new AbortController();
     token.onCancellationRequested(() => abort.abort());
-    for (const [index, uri] of files.entries()) {
+    for (const [index, uri] of found.entries()) {
       if (token.isCancellationRequested) return false;
-      progress.report({ message: `${index + 1}/${files.length}` });
+      progress.report({ message: `${index + 1}/${found.length}` });
       const bytes = await vscode.workspace.fs.readFile(uri);
       if (bytes.length > LONGEST_FILE) continue;
       const open = vscode.workspace.textDocuments.find((candidate) => candidate.uri.toString() === uri.toString());
       const text = open?.getText() ?? new TextDecoder().decode(bytes);
       const language = open ? engineLanguage(open) : engineLanguage({ languageId: '', uri });
-      const answer = await services.client.ask<CheckAnswer>({ ask: 'check', text, language: language === 'plain' ? byExtension(uri) : language, budget_ms: 20_000 }, abort.signal);
+      const known = language === 'plain' ? byExtension(uri) : language;
+      const files = await services.companions.of({ uri, text, language: known });
+      const answer = await services.client.ask<CheckAnswer>({ ask: 'check', text, language: known, files, budget_ms: 20_000 }, abort.signal);
       if (!answer.ok) continue;
       const counts = countsOf(answer);
       for (const key of ['claims', 'hold', 'fail', 'undecided', 'unread'] as const) total[key] += counts[key];

@@ -102,6 +102,7 @@ function toRequest(request: ConsultRequest, question: Question): ExpandRequest {
     ...rest,
     ...(order === undefined ? { terms } : { order }),
     details: [...new Set<Detail>(['reading', 'insertion', ...(request.details ?? [])])],
+    ...(request.files === undefined || request.files.length === 0 ? {} : { files: request.files }),
     ...(request.budget_ms === undefined ? {} : { budget_ms: request.budget_ms }),
   };
 }

@@ -2,7 +2,7 @@
  * What an editor asks of the worker beyond the engine's protocol: an expansion at a place in a document with every source of the
  * question weighed, the edits that put a result into the text, and pictures of formulas. Offsets count UTF-16 code units.
  */
-import type { Answer, CheckAnswer, Detail, ErrorAnswer, ExpandAnswer, FitAnswer, GuardAnswer, Measure, Side } from '../../protocol.ts';
+import type { Answer, CheckAnswer, CompanionFile, Detail, ErrorAnswer, ExpandAnswer, FitAnswer, GuardAnswer, Measure, Side } from '../../protocol.ts';
 
 /** What can be settled about an expansion before it is computed. Absent: not settled here. */
 export interface Question {
@@ -41,6 +41,8 @@ export interface ConsultRequest {
   readonly remembered?: Question;
   readonly setting?: Question;
   readonly details?: readonly Detail[];
+  /** Files that the document refers to. */
+  readonly files?: readonly CompanionFile[];
   readonly budget_ms?: number;
 }
 export interface ConsultAnswer {

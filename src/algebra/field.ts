@@ -85,6 +85,7 @@ export function createField(assumptions: readonly Assumption[], budget: Budget, 
   function constantSign(a: Element): SignSet {
     for (const precision of SIGN_PRECISIONS) {
       const z = zero.enclose(a, precision);
+      if (!z && precision > 64) return ANY;
       if (!z) continue;
       if (!complex.isReal(z)) {
         if (z.im.mid > z.im.rad || -z.im.mid > z.im.rad) return NOT_REAL;

@@ -54,8 +54,8 @@ function inverseOfItself(s: Session, e: CallNode, evaluate: Evaluate): Multi | n
     const turned = scaleBy(c, size, c.field.i);
     return e.function === 'acos' ? turned : subtract(c, c.field.fromExpression(build.quotient(build.constant('pi'), build.number(2))), turned);
   }
-  // acosh(cos u) = i acos(cos u) (DLMF 4.37.24 on the real interval).
-  if (e.function === 'acosh' && inner.kind === 'call' && inner.function === 'cos') {
+  // acosh(v) = i acos(v) for -1 <= v <= 1 (DLMF 4.37.24).
+  if (e.function === 'acosh' && inner.kind === 'call' && (inner.function === 'cos' || inner.function === 'sin')) {
     const angle = inverseOfItself(s, { ...e, function: 'acos' }, evaluate);
     return angle === null ? null : scaleBy(c, angle, c.field.i);
   }
@@ -67,10 +67,27 @@ function inverseOfItself(s: Session, e: CallNode, evaluate: Evaluate): Multi | n
   if (e.function === 'asinh' || e.function === 'atanh' || e.function === 'log') return u;
   const { large, constant } = split(c, u);
   if (large) return null;
-  const pi = c.field.fromExpression(build.constant('pi'));
   if (e.function === 'acos' && isRational(constant) && constant.num === 0n) return evaluate(s, build.call('abs', argument));
-  const [low, high] = e.function === 'acos' ? [Q.ZERO, pi] : [c.field.multiply(pi, Q.rational(-1, 2)), c.field.multiply(pi, Q.HALF)];
-  return c.field.compare(constant, low) === 1 && c.field.compare(constant, high) === -1 ? u : null;
+  return inPrincipalRange(c, e.function, u, constant);
+}
+
+/** Half periods from the principal range that are looked through. */
+const MOST_HALF_PERIODS = 16;
+
+/** The value in the principal range with the same sine, cosine or tangent as u, whose limit is inside a monotone piece: asin(sin u) = (-1)^k (u - k pi) and so on. */
+function inPrincipalRange(c: Session['context'], id: string, u: Multi, limit: Element): Multi | null {
+  const { field } = c;
+  const pi = field.fromExpression(build.constant('pi'));
+  const start = id === 'acos' ? Q.ZERO : Q.rational(-1, 2);
+  for (let n = 0; n <= 2 * MOST_HALF_PERIODS; n += 1) {
+    const k = n % 2 === 0 ? n / 2 : -(n + 1) / 2;
+    const low = Q.add(start, Q.rational(k));
+    const inside = field.compare(limit, field.multiply(pi, low)) === 1 && field.compare(limit, field.multiply(pi, Q.add(low, Q.ONE))) === -1;
+    if (!inside) continue;
+    if (k % 2 === 0 || id === 'atan') return subtract(c, u, field.multiply(pi, Q.rational(k)));
+    return subtract(c, field.multiply(pi, Q.rational(id === 'acos' ? k + 1 : k)), u);
+  }
+  return null;
 }
 
 /** log|u| = log(u^2)/2 for real u: the same on both sides. */

@@ -305,6 +305,13 @@ export function complexArithmetic<T>(r: RealArithmetic<T>, analytic = false): Co
     const difference = subtract(a, b);
     return { re: r.divideInteger(difference.re, 2), im: r.divideInteger(difference.im, 2) };
   };
+  /** A function that is real on the whole real line. */
+  const realOnLine =
+    (f: (x: T) => T | null, elsewhere: (z: Z) => Z | null) =>
+    (z: Z): Z | null => {
+      const value = isReal(z) ? f(z.re) : null;
+      return value === null ? elsewhere(z) : fromReal(value);
+    };
   const inverseTanh = (z: Z): Z | null => centred(z, inverseTanhDirect, (y) => (inverseTanhMeetsCut(y) ? null : divide(one, subtract(one, square(y)))));
   const inverseTanhMeetsCut = (z: Z): boolean => r.containsZero(z.im) && meetsUnitEnds(z.re);
   const expm1 = (z: Z): Z | null => {
@@ -369,8 +376,8 @@ export function complexArithmetic<T>(r: RealArithmetic<T>, analytic = false): Co
     tanh: through(tan, timesI, overI),
     asin: inverseSine,
     acos: inverseCosine,
-    atan: through(inverseTanh, timesI, overI),
-    asinh: through(inverseSine, timesI, overI),
+    atan: realOnLine(r.atan, through(inverseTanh, timesI, overI)),
+    asinh: realOnLine(r.asinh, through(inverseSine, timesI, overI)),
     acosh: inverseCosh,
     atanh: inverseTanh,
   };

@@ -112,7 +112,7 @@ export function power(c: Context, f: Multi, exponent: Element): Multi {
   if (n === null && signOfExponent(c, lead.exponent) !== 0) noteSides(c, isEvenLead(lead, f.element) && isPositive(c, lead.coefficient) && isEvenLead({ ...lead, exponent: exponentOfElement }, f.element));
   let front = power(c, lead.coefficient, exponent);
   if (n === null) {
-    const turns = turnsAcrossCut(c, lead.coefficient, rest);
+    const turns = turnsAcrossCut(c, f, lead.coefficient, rest);
     if (turns !== 0) front = scaleBy(c, front, c.field.exp(multiplyElements(c, Q.rational(2 * turns), multiplyElements(c, exponent, multiplyElements(c, c.field.i, pi(c))))));
   }
   const tail: Multi = rest.at(0) === null ? Q.ONE : new Series(f.element, powerTail(c, rest, exponent), unnamed);
@@ -122,14 +122,17 @@ export function power(c: Context, f: Multi, exponent: Element): Multi {
 export const pi = (c: Context): Element => c.field.fromExpression(build.constant('pi'));
 
 /**
- * For front * (1 + rest) with a negative real front: how many times 2 pi i the principal logarithm jumps from log(front) + log(1 + rest), 0 or -1.
+ * For f = element power * front * (1 + rest) with a negative real front: how many times 2 pi i the principal logarithm jumps from log(front) + log(1 + rest), 0 or -1.
  * The logarithm on the cut itself is continuous from above; a product just below it has the argument -pi.
  */
-function turnsAcrossCut(c: Context, front: Multi, rest: Stream): 0 | -1 {
+function turnsAcrossCut(c: Context, f: Series, front: Multi, rest: Stream): 0 | -1 {
   const lead = monomialOf(c, front);
   if (!lead || isRational(lead.constant) ? !lead || (lead.constant as { num: bigint }).num >= 0n : c.field.isReal(lead.constant) !== 'yes' || c.field.sign(lead.constant) !== -1) return 0;
+  // The rest is smaller than every part of the front: where the front itself keeps away from the axis, its side is that of the product.
+  if (front instanceof Series && !isRealMulti(c, front) && signOfImaginary(c, front.stream, 40) !== 0) return 0;
   if (front instanceof Series && !isRealMulti(c, front)) throw new Declined('undecided', 'The branch of a power or logarithm near its cut could not be decided; choose a side or simplify the argument.');
-  const sign = signOfImaginary(c, rest, 40);
+  let sign = signOfImaginary(c, rest, 4);
+  if (sign === 0 && !isRealMulti(c, f)) sign = signOfImaginary(c, rest, 40);
   // The two sides of the point lie on different sides of the cut.
   if (sign !== 0) c.notes.sided = true;
   return sign === 1 ? -1 : 0;
@@ -200,7 +203,7 @@ export function logarithm(c: Context, f: Multi): Multi {
   const lead = leadOf(c, f);
   const rest = relativeRest(c, f, lead);
   let total = logarithm(c, lead.coefficient);
-  if (turnsAcrossCut(c, lead.coefficient, rest) !== 0) total = subtract(c, total, multiplyElements(c, Q.rational(2), multiplyElements(c, c.field.i, pi(c))));
+  if (turnsAcrossCut(c, f, lead.coefficient, rest) !== 0) total = subtract(c, total, multiplyElements(c, Q.rational(2), multiplyElements(c, c.field.i, pi(c))));
   if (signOfExponent(c, lead.exponent) !== 0) {
     noteSides(c, isEvenLead(lead, f.element) && isPositive(c, lead.coefficient));
     total = add(c, scaleBy(c, logarithmOf(c, f.element), lead.exponent), total);

@@ -108,6 +108,9 @@ function kelvinComplex(kit: Kit<ComplexBall>, nu: ComplexBall, z: ComplexBall, k
   if (exact === null || !isRational(exact) || s === null || bound.exponent(kit.size(z)) > 12) return null;
   const { a } = kit;
   const first = kind === 'Ber' || kind === 'Bei';
+  // The turned arguments must not have crossed the cuts of J and K: away from the sector the function is not the sum of principal values.
+  const turned = first && integerOf(exact) === null;
+  if ((!first && !real.isPositive(z.re)) || (turned && real.compare(real.absolute(z.im), z.re) !== -1)) return null;
   const direction: ComplexBall = { re: first ? real.negate(s) : s, im: s };
   const value = (w: ComplexBall, turn: 1 | -1): ComplexBall | null => {
     const raw = first ? firstKind(kit, exact, a.multiply(z, w), -1) : secondKind(kit, exact, a.multiply(z, w), 'K');

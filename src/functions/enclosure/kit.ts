@@ -34,9 +34,10 @@ export const realKit = (precision: number, check: () => void = untimed): Kit<Bal
   fromReal: (x) => x,
 });
 
-export const complexKit = (precision: number, check: () => void = untimed): Kit<ComplexBall> => ({
+/** `onLine`: all arguments are exactly real, so that logarithms and roots of negative numbers are their principal values, the limits from above; else a set that meets a cut has no value. */
+export const complexKit = (precision: number, check: () => void = untimed, onLine = false): Kit<ComplexBall> => ({
   precision,
-  a: complex.arithmetic(precision, true),
+  a: complex.arithmetic(precision, !onLine),
   isReal: false,
   check,
   size: (z) => real.absoluteUpper(complex.absolute(z, BOUND_BITS)),

@@ -71,8 +71,9 @@ function complexDirect(id: string, args: readonly ComplexBall[], precision: numb
   const algorithm = ALGORITHMS.get(id);
   const limit = Math.min(...args.flatMap((z) => [argumentBits(z.re), argumentBits(z.im)]));
   const f = algorithm?.complex;
+  const onLine = args.every((z) => z.im.mid === 0n && z.im.rad === 0n);
   if (!f) return null;
-  const value = adaptive((bits) => f(complexKit(bits, check), args), complexAccuracy, precision, limit, check);
+  const value = adaptive((bits) => f(complexKit(bits, check, onLine), args), complexAccuracy, precision, limit, check);
   return value && complex.round(value, precision + 8);
 }
 

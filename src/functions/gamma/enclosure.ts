@@ -76,8 +76,8 @@ function rising<T>(kit: Kit<T>, z: T, r: number): T {
 export function logGamma<T>(kit: Kit<T>, z: T): T | null {
   const { a } = kit;
   if (kit.isReal && !real.isPositive(kit.realPart(z))) return null;
-  const n = kit.isReal ? exactInteger(kit.realPart(z), 2000) : null;
-  if (n !== null) return a.log(a.fromInteger(factorial(n - 1)));
+  const n = integerPart(kit, z, 2000);
+  if (n !== null) return n > 0 ? a.log(a.fromInteger(factorial(n - 1))) : null;
   const r = shiftFor(kit, z);
   if (r === null) return null;
   const far = stirling(kit, a.add(z, a.fromInteger(r)));
@@ -103,12 +103,15 @@ export function gamma<T>(kit: Kit<T>, z: T): T | null {
   if (inverse !== null) return kit.a.divide(kit.a.one, inverse);
   return gammaRight(kit, z);
 }
+/** The integer that z is exactly; null otherwise. */
+const integerPart = <T>(kit: Kit<T>, z: T, limit?: number): number | null => (kit.a.isZero(kit.fromReal(kit.imaginaryPart(z))) ? exactInteger(kit.realPart(z), limit) : null);
+
 /** Re z below 1/2 at the middle. */
 const leftHalf = <T>(kit: Kit<T>, z: T): boolean => real.toDouble(real.midpoint(kit.realPart(z))) < 0.5;
 
 function gammaRight<T>(kit: Kit<T>, z: T): T | null {
   const { a } = kit;
-  const n = kit.isReal ? exactInteger(kit.realPart(z), 2000) : null;
+  const n = integerPart(kit, z, 2000);
   if (n !== null && n > 0) return a.fromInteger(factorial(n - 1));
   const r = shiftFor(kit, z);
   const logarithm = r === null ? null : stirling(kit, a.add(z, a.fromInteger(r)));
@@ -119,7 +122,7 @@ function gammaRight<T>(kit: Kit<T>, z: T): T | null {
 /** 1/Gamma, entire; reflection 5.5.3 on the left. */
 export function reciprocalGamma<T>(kit: Kit<T>, z: T): T | null {
   const { a } = kit;
-  const n = kit.isReal ? exactInteger(kit.realPart(z)) : null;
+  const n = integerPart(kit, z);
   if (n !== null && n <= 0) return a.zero;
   if (!leftHalf(kit, z)) {
     const value = gammaRight(kit, z);

@@ -1,0 +1,57 @@
+/** Causes of wrong, late or missing answers that random compositions of functions brought to light; each case stands for its cause. Values by the identities named. */
+import { describe, expect, test } from 'vitest';
+import { expectExpansion, expansionOf, latex, outcomeOf, plain, same } from './tools.ts';
+import { partialSum } from '../../src/expand/index.ts';
+
+describe('what cancels by form is gone', () => {
+  test('a constant written with the variable stays a constant', () => {
+    expectExpansion(expansionOf('\\operatorname{artanh}(x-\\pi-x)', { at: '1' }), '-atanh(pi)', null);
+    expectExpansion(expansionOf('\\operatorname{arcosh}(\\frac13-x+x)'), 'log((1 + 2*i*sqrt(2))/3)', null);
+    expectExpansion(expansionOf('\\frac{1}{1-x+x}'), '1', null);
+  });
+});
+
+describe('values at fractions do not ask for themselves', () => {
+  test('Ai(0) = 3^(-2/3)/Gamma(2/3), -Ai\'(0) = 3^(-1/3)/Gamma(1/3) (DLMF 9.2.3, 9.2.4)', () => {
+    expectExpansion(expansionOf('\\operatorname{Ai}(x)', { terms: 3 }), '3^(-2/3)/gamma(2/3) - x*3^(-1/3)/gamma(1/3) + x^3*3^(-2/3)/(6*gamma(2/3))', '4');
+  });
+  test('a call of a constant beside the variable', () => {
+    expectExpansion(expansionOf('x+\\Gamma\\left(\\frac13\\right)'), 'x + gamma(1/3)', null);
+  });
+});
+
+describe('inverse functions of their functions, outside the principal range', () => {
+  test.each([
+    ['\\arcsin(\\sin x)', '2', 'pi - x'],
+    ['\\arccos(\\cos x)', '4', '2*pi - x'],
+    ['\\arctan(\\tan x)', '-2', 'x + pi'],
+    ['\\arccos(\\sin x)', '3', 'x - pi/2'],
+    ['\\operatorname{arcosh}(\\cosh(3+x))', '0', '3 + x'],
+    ['\\operatorname{arcosh}(\\cosh x)', '-1', '-x'],
+    ['\\operatorname{arcosh}(\\sin(1+x))', '2', 'i*(x + 1 - pi/2)'],
+    ['\\arcsin(\\cosh x)', '1', 'pi/2 - i*x'],
+  ])('%s at %s', (text, at, expected) => {
+    const found = expansionOf(text, { at });
+    expect(found.exact).toBe(true);
+    expect(same(partialSum(found), plain(expected))).toBe(true);
+  });
+  test('arccos(cosh x) is i|x|', () => {
+    const found = expansionOf('\\arccos(\\cosh x)');
+    expect(same(partialSum(found), plain('i*x'))).toBe(true);
+    expect(found.left && same(partialSum(found.left), plain('-i*x'))).toBe(true);
+  });
+});
+
+test('a difference is found to vanish through its derivative: the Gudermannian in two forms (DLMF 4.23.42)', () => {
+  expectExpansion(expansionOf('\\arctan(\\sinh x)-2\\arctan(\\tanh\\frac{x}{2})'), '0', null);
+});
+
+test('the side of a cut is that of the part that tends to zero most slowly', () => {
+  const found = outcomeOf(latex('\\operatorname{arcosh}(\\ln\\ln x)'), { at: '1', side: 'left', terms: 2 });
+  expect(found.ok).toBe(true);
+});
+
+test('the sign of a constant that is real by construction', () => {
+  const found = expansionOf('\\operatorname{artanh}\\left(\\arctan\\frac{x}{3}\\right)', { at: '1', terms: 1 });
+  expect(same(partialSum(found), plain('atanh(atan(1/3))'))).toBe(true);
+});

@@ -31,6 +31,8 @@ function equationOf(id: string, args: readonly Expression[], index: number): Equ
   return describe(id)?.equation?.(args, index) ?? null;
 }
 
+export const hasEquation = (id: string, args: readonly Expression[], index: number): boolean => equationOf(id, args, index) !== null;
+
 interface Start {
   /** p_j(c + s) by powers of s. */
   readonly shifted: readonly (readonly Ball[])[];

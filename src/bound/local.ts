@@ -5,7 +5,7 @@ import { describe } from '../functions/index.ts';
 import { Declined } from '../outcome.ts';
 import { type LogModel, logModelOfTree, type Model, type ModelArithmetic, modelArithmetic, rationalOf } from '../rigorous/index.ts';
 import type { Numbers } from './numbers.ts';
-import { isExactlyZero, type Segment } from './region.ts';
+import { isExactlyZero, normalForm, type Segment } from './region.ts';
 import { besselSeriesModel } from './besselAtZero.ts';
 import { envelopeModel } from './enveloping.ts';
 import { rewriteCall } from './rewrite.ts';
@@ -42,8 +42,12 @@ export function modelOf<T>(e: Expression, n: Numbers<T>, m: ModelArithmetic<T>, 
 export function logModelOf<T>(e: Expression, n: Numbers<T>, m: ModelArithmetic<T>, variable: string, leaf: Model<T>, vanishes?: (e: Expression) => boolean, check?: () => void): LogModel<T> | null {
   const environment = new Map([...parameterModels(n, m), [variable, leaf] as const]);
   if (environment.size > PARAMETER_LIMIT) return null;
-  return logModelOfTree(e, { m, trees: n.trees, real: n.r, describe, environment, vanishes, check, call: (id, args, models, isConstant) => envelopeModel(id, args, models, n, m) ?? besselSeriesModel(id, args, models, n, m) ?? specialModel(id, args, models, n, m, isConstant), rewrite: (id, args, models) => rewriteCall(id, args, models, n, m) });
+  return logModelOfTree(e, { m, trees: n.trees, real: n.r, describe, environment, vanishes, check, call: (id, args, models, isConstant) => envelopeModel(id, args, models, n, m) ?? besselSeriesModel(id, args, models, n, m) ?? specialModel(id, args, models, n, m, isConstant), rewrite: (id, args, models) => rewriteCall(id, args, models, n, m), simplify: (tree) => (n.r.isPositive(leaf.range) ? normalForm(tree, variable, '>') : n.r.isNegative(leaf.range) ? normalForm(tree, variable, '<') : tree) });
 }
+
+/** Nothing but powers of t and of its logarithm. */
+export const isPowerSum = (expansion: Expansion): boolean =>
+  expansion.remainder === null || (expansion.remainder.power !== null && rationalOf(expansion.remainder.power) !== null && expansion.prefactor === null && expansion.remainder.scale === null && expansion.terms.every((t) => t.scale === null));
 
 /** The least q that makes every power of the expansion a whole multiple of 1/q; null where a power is not a rational number. */
 export function denominatorOf(expansion: Expansion): number | null {
@@ -89,14 +93,21 @@ export function localDomain<T>(segment: Segment, n: Numbers<T>, length: number, 
   return { m, leaf, from: r.zero, to: r.one, scale, denominator: q, sign };
 }
 
+/** Proof that a tree tends to zero: its normal form in 1/x is zero at zero. */
+function vanishesAtInfinity(e: Expression, variable: string, sign: 1 | -1): boolean {
+  const inner = normalForm(substitute(e, variable, build.quotient(build.number(1), build.symbol(variable))), variable, sign > 0 ? '>' : '<');
+  return isExactlyZero(substitute(inner, variable, build.number(0)), []);
+}
+
 /** f about the local end of a segment, on its local domain. */
 export function localModel<T>(segment: Segment, n: Numbers<T>, variable: string, length: number, q: number, check: () => void): Local<T> | null {
   const { r } = n;
   const domain = localDomain(segment, n, length, q);
   if (domain === null) return null;
-  const place = domain.leaf.valuation < 0 ? null : segment.local === 'lower' ? segment.lower : segment.upper;
+  const infinite = domain.leaf.valuation < 0;
+  const place = infinite ? null : segment.local === 'lower' ? segment.lower : segment.upper;
   const centre = place && n.value(place);
-  const vanishes = place && !(centre && r.isZero(centre) && r.isPoint(centre)) ? (e: Expression): boolean => isExactlyZero(substitute(e, variable, place), []) : undefined;
+  const vanishes = place && !(centre && r.isZero(centre) && r.isPoint(centre)) ? (e: Expression): boolean => isExactlyZero(substitute(e, variable, place), []) : infinite ? (e: Expression): boolean => vanishesAtInfinity(e, variable, domain.sign) : undefined;
   const f = logModelOf(segment.expansion.function, n, domain.m, variable, domain.leaf, vanishes, check);
   return f && { ...domain, f };
 }
@@ -110,7 +121,7 @@ export function remainderAtPoint<T>(local: Local<T>, expansion: Expansion, n: Nu
   const { r } = n;
   if (expansion.remainder === null) return [m.constant(r.zero)];
   const order = expansion.remainder.power === null ? null : rationalOf(expansion.remainder.power);
-  if (order === null || expansion.prefactor !== null || expansion.remainder.scale !== null || expansion.terms.some((t) => t.scale !== null)) return null;
+  if (order === null || !isPowerSum(expansion)) return null;
   const first = ceilingOf(Q.multiply(order, { num: BigInt(local.denominator), den: 1n }));
   const expected = expectedCoefficients(local, expansion, n);
   if (expected === null) return null;

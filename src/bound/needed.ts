@@ -1,12 +1,14 @@
 /** Ladder of terms against bound, the least number of terms for a tolerance, and how far from the point a tolerance can be kept. */
-import { build, type Assumption, type Expression, Q, type Rational } from '../expression/index.ts';
+import { build, type Assumption, type Expression, freeSymbols, Q, type Rational } from '../expression/index.ts';
 import { type Expansion, prefix } from '../expand/index.ts';
-import { type Budget, Declined } from '../outcome.ts';
+import { budget, type Budget, Declined, success } from '../outcome.ts';
 import { type Ball, encloseReal, real } from '../rigorous/index.ts';
 import { describe } from '../functions/index.ts';
+import { fittedDegreeOf } from './fitted.ts';
 import { sumOf } from './local.ts';
 import { ballNumbers } from './numbers.ts';
 import { remainderAt } from './pieces.ts';
+import { compareReal } from './region.ts';
 import { bound, type ModelCache, variableName } from './remainder.ts';
 import type { ClosedInterval, ExpansionWithTerms, LadderEntry, Measure, Reach, RemainderBound, TermsNeeded } from './types.ts';
 
@@ -74,6 +76,7 @@ export function termsNeededFor(problem: NeededProblem, tolerance: Rational): Ter
   let refuted = true;
   let unbounded: RemainderBound | null = null;
   const sizes: number[] = [];
+  const convergence = convergenceOn(problem, expansionOf(1));
   for (let n = 1; n <= MOST_TERMS; n += 1) {
     problem.budget.check();
     const expansion = expansionOf(n);
@@ -95,10 +98,11 @@ export function termsNeededFor(problem: NeededProblem, tolerance: Rational): Ter
     sizes[n] = size;
     if (expansion.exact || (expansion.terms.length < n && expansion.remainder === null)) break;
     if (size < smallest.size) smallest = { terms: n, size };
-    const limit = expansion.divergent ? 4 + Math.floor(smallest.terms / 3) : 6 + Math.floor(smallest.terms / 2);
+    // Inside the disc of convergence the error falls in the end, however it grows at first.
+    const limit = convergence === 'inside' ? Infinity : (convergence === 'unknown' ? 40 : expansion.divergent ? 4 : 6) + Math.floor(smallest.terms / (expansion.divergent ? 3 : 2));
     if (n - smallest.terms > limit) {
       const bounded = best ?? { terms: smallest.terms, bound: boundOf(smallest.terms) };
-      return noNumber(problem, expansionOf, expansion, tolerance, bounded);
+      return noNumber(problem, expansionOf, expansion, tolerance, bounded, n, convergence);
     }
     if (n >= 60 && n % 30 === 0) {
       const more = furtherTerms(n, sizes, size - logarithm(tolerance));
@@ -112,7 +116,7 @@ export function termsNeededFor(problem: NeededProblem, tolerance: Rational): Ter
 }
 
 /** A proven lower bound of the error by its values at the finite ends of the interval; null where they are not defined. */
-function endErrors(problem: NeededProblem, tolerance: Rational): (expansion: Expansion) => Rational | null {
+function endErrors(problem: Pick<NeededProblem, 'interval' | 'measure'>, tolerance: Rational): (expansion: Expansion) => Rational | null {
   const ends = [problem.interval.lower, problem.interval.upper];
   const precision = 80 + Math.max(0, Math.ceil(-Math.log2(Math.max(1e-300, Q.toDouble(tolerance)))));
   return (expansion) => {
@@ -173,80 +177,166 @@ const logarithm = (q: Rational): number => {
   return value > 0 ? Math.log(value) : -745;
 };
 
-function noNumber(problem: NeededProblem, expansionOf: (n: number) => Expansion, expansion: Expansion, tolerance: Rational, best: { terms: number; bound: RemainderBound }): TermsNeeded {
-  const reason = expansion.divergent
-    ? 'The series diverges: beyond its best number of terms the error grows.'
-    : 'The interval reaches beyond the radius of convergence, where more terms make the error larger.';
-  const reach = reachOf(problem, expansionOf, expansion, tolerance, best.terms);
-  return { terms: null, reason, best: { terms: best.terms, bound: best.bound.value ?? '' }, ...(reach ? { reach } : {}) };
+type Convergence = 'inside' | 'beyond' | 'divergent' | 'unknown';
+
+/** Where the interval lies against the proven radius of convergence: within the closed disc, or reaching beyond it. */
+function convergenceOn(problem: NeededProblem, expansion: Expansion): Convergence {
+  if (expansion.divergent) return 'divergent';
+  const radius = expansion.radius;
+  if (radius === undefined) return 'unknown';
+  if (radius.value === null) return 'inside';
+  const R = encloseReal(radius.value, new Map(), 96, describe);
+  const infinite = expansion.point === 'inf' || expansion.point === '-inf';
+  const centre = typeof expansion.point === 'object' ? encloseReal(expansion.point, new Map(), 96, describe) : real.ZERO;
+  if (R === null || centre === null) return 'unknown';
+  let result: Convergence = 'inside';
+  for (const end of [problem.interval.lower, problem.interval.upper]) {
+    const x = encloseReal(end, new Map(), 96, describe);
+    // An infinite end is the point itself, or as far from it as can be.
+    const t = x === null ? (infinite ? real.ZERO : null) : infinite ? real.divide(real.ONE, real.absolute(x), 96) : real.absolute(real.subtract(x, centre, 96));
+    const order = t === null ? (x === null && isInfinite(end) ? 1 : null) : real.compare(t, R);
+    if (order === 1) return 'beyond';
+    if (order === null && t !== null && !real.overlaps(t, R)) result = 'unknown';
+    if (t === null && order === null) result = 'unknown';
+  }
+  return result;
+}
+const isInfinite = (e: Expression): boolean => (e.kind === 'constant' && e.name === 'infinity') || (e.kind === 'negation' && isInfinite(e.operand));
+
+function noNumber(problem: NeededProblem, expansionOf: (n: number) => Expansion, expansion: Expansion, tolerance: Rational, best: { terms: number; bound: RemainderBound }, tried: number, convergence: Convergence): TermsNeeded {
+  const radius = expansion.radius?.value;
+  const reason =
+    convergence === 'divergent'
+      ? 'The series diverges: beyond its best number of terms the error grows.'
+      : convergence === 'beyond'
+        ? `The interval reaches beyond the radius of convergence${radius ? ` (nearest singularity at distance ${shown(radius)})` : ''}: there the terms grow without bound. Every number of terms up to ${tried} is refuted by a value, and more terms make the error larger.`
+        : `No number of terms up to ${tried} keeps the tolerance, and the radius of convergence is not known.`;
+  const reach = reachOf(problem, expansionOf, expansion, tolerance, best.terms, convergence);
+  return { terms: null, reason, best: { terms: best.terms, bound: best.bound.value ?? '' }, ...(reach ? { reach } : {}), ...fittedAnswer(problem, expansion, tolerance) };
+}
+const shown = (e: Expression): string => {
+  const value = encloseReal(e, new Map(), 64, describe);
+  return value === null ? '?' : real.toDecimalDown(value, 7);
+};
+
+/** The degree of a fitted polynomial, on a finite interval of a function without parameters. */
+function fittedAnswer(problem: NeededProblem, expansion: Expansion, tolerance: Rational): { readonly fittedDegree?: number } {
+  const variable = variableName(expansion);
+  const [low, high] = [problem.interval.lower, problem.interval.upper].map((end) => encloseReal(end, new Map(), 96, describe));
+  if (!low || !high || expansion.left || freeSymbols(expansion.function).some((name) => name !== variable)) return {};
+  try {
+    const degree = fittedDegreeOf({ function: expansion.function, variable, low: real.lower(low), high: real.upper(high), measure: problem.measure, budget: problem.budget }, tolerance);
+    return degree === null ? {} : { fittedDegree: degree };
+  } catch (error) {
+    // A guide beside the answer, not a part that it waits for.
+    if (error instanceof Declined) return {};
+    throw error;
+  }
 }
 
-/** How far from the point the tolerance can be kept by some number of terms. */
-function reachOf(problem: NeededProblem, expansionOf: (n: number) => Expansion, expansion: Expansion, tolerance: Rational, around: number): Reach | null {
-  if (!expansion.divergent && expansion.radius?.value) {
-    const value = encloseReal(expansion.radius.value, new Map(), 96, describe);
-    if (value === null) return null;
-    return { distance: real.toDecimalDown(value, 12), closed: false };
-  }
-  if (!expansion.divergent) return null;
+const REACH_SHARE = 0.5;
+const FEW_TERMS = 8;
+
+/** How far from the point, on the sides that the interval has, the tolerance can be kept by some number of terms. */
+function reachOf(problem: NeededProblem, expansionOf: (n: number) => Expansion, expansion: Expansion, tolerance: Rational, around: number, convergence: Convergence): Reach | null {
+  // What more terms can do is not known.
+  if (convergence === 'unknown') return null;
+  const limited = { ...problem, budget: budget(Math.max(1, problem.budget.remaining() * REACH_SHARE)) };
   let best: { distance: string; size: Rational } | null = null;
   let worse = 0;
-  for (let n = 1; n <= around * 4 + 20 && worse < 4; n += 1) {
-    const found = reachWith(problem, expansionOf(n), tolerance);
-    if (found !== null && (best === null || Q.compare(found.size, best.size) > 0)) {
-      best = found;
-      worse = 0;
-    } else if (best !== null) worse += 1;
+  const last = convergence === 'divergent' ? around * 4 + 20 : FEW_TERMS;
+  try {
+    for (let n = 1; n <= last && worse < 4; n += 1) {
+      const found = reachWith(limited, expansionOf(n), tolerance, problem.interval);
+      if (found !== null && (best === null || Q.compare(found.size, best.size) > 0)) {
+        best = found;
+        worse = 0;
+      } else if (best !== null) worse += 1;
+    }
+  } catch (error) {
+    if (!(error instanceof Declined) || problem.budget.remaining() <= 0) throw error;
   }
-  return best === null ? null : { distance: best.distance, closed: true };
+  const radius = convergence === 'beyond' && expansion.radius?.value ? encloseReal(expansion.radius.value, new Map(), 96, describe) : null;
+  // A sum of few terms may serve beyond the disc where the tolerance is wide.
+  if (radius === null || (best !== null && Q.compare(best.size, real.upper(radius)) > 0)) return best === null ? null : { distance: best.distance, closed: true };
+  return { distance: real.toDecimalDown(radius, 12), closed: atRadius(limited, expansionOf, expansion, tolerance) };
 }
 
-/** For one sum: the largest proven distance from the point (1/|x| at infinity) within which the bound keeps the tolerance; null where none was found. */
-export function reachWith(problem: Omit<NeededProblem, 'expansionWithTerms' | 'interval'>, expansion: Expansion, tolerance: Rational): { readonly distance: string; readonly size: Rational } | null {
+/** Whether some number of terms keeps the tolerance as far as the radius itself, the end included. */
+function atRadius(problem: NeededProblem, expansionOf: (n: number) => Expansion, expansion: Expansion, tolerance: Rational): boolean {
+  const radius = expansion.radius?.value;
+  if (!radius) return false;
+  try {
+    const interval = within(expansion, radius, problem.interval);
+    const found = termsNeededFor({ ...problem, interval, expansionWithTerms: (n) => success(expansionOf(n)) }, tolerance);
+    return found.terms !== null || found.reason === 'slow';
+  } catch (error) {
+    if (error instanceof Declined) return false;
+    throw error;
+  }
+}
+
+/** For one sum: the largest proven distance from the point (1/|x| at infinity) within which the bound keeps the tolerance, on the sides that `sides` has (else those that the expansion serves); null where none was found. */
+export function reachWith(problem: Omit<NeededProblem, 'expansionWithTerms' | 'interval'>, expansion: Expansion, tolerance: Rational, sides?: ClosedInterval): { readonly distance: string; readonly size: Rational } | null {
   if (expansion.exact && !expansion.left) return { distance: 'inf', size: Q.rational(10n ** 30n) };
+  const intervalOf = (distance: Rational): ClosedInterval => within(expansion, build.number(distance), sides);
+  /** A value at an end refutes at little cost. */
+  const refuted = (distance: Rational): boolean => {
+    const error = endErrors({ ...problem, interval: intervalOf(distance) }, tolerance)(expansion);
+    return error !== null && Q.compare(error, tolerance) > 0;
+  };
   const keeps = (distance: Rational): boolean => {
+    problem.budget.check();
+    if (refuted(distance)) return false;
     try {
-      const result = bound({ ...problem, expansion, interval: around(expansion, distance) });
+      const result = bound({ ...problem, expansion, interval: intervalOf(distance) });
       return result.upperRational !== null && Q.compare(result.upperRational, tolerance) <= 0;
     } catch (error) {
       if (error instanceof Declined && error.failure.code !== 'over-budget') return false;
       throw error;
     }
   };
-  // A power of two that keeps it while its double does not, then halving to 8 digits.
+  // A power of two that keeps it while its double does not.
+  const two = Q.rational(2n);
   let low: Rational = Q.ONE;
   if (keeps(low)) {
-    while (keeps(Q.multiply(low, Q.rational(2n)))) {
-      low = Q.multiply(low, Q.rational(2n));
+    while (keeps(Q.multiply(low, two))) {
+      low = Q.multiply(low, two);
       if (low.num > 1n << 200n) return { distance: 'inf', size: low };
     }
   } else {
     for (let k = 0; ; k += 1) {
-      low = Q.divide(low, Q.rational(2n));
+      low = Q.divide(low, two);
       if (keeps(low)) break;
       if (k > 200) return null;
     }
   }
-  let high = Q.multiply(low, Q.rational(2n));
-  for (let k = 0; k < 24; k += 1) {
-    const middle = Q.divide(Q.add(low, high), Q.rational(2n));
-    if (keeps(middle)) low = middle;
-    else high = middle;
+  // Halving to 8 digits: by values at the ends, which are the worst places as a rule, and one proof; where that fails, by proofs.
+  for (const holds of [(distance: Rational): boolean => !refuted(distance), keeps]) {
+    let [from, to] = [low, Q.multiply(low, two)];
+    for (let k = 0; k < 24; k += 1) {
+      const middle = Q.divide(Q.add(from, to), two);
+      if (holds(middle)) from = middle;
+      else to = middle;
+    }
+    // The printed number itself must keep it: rounding down may only shrink the interval.
+    if (holds === keeps || keeps(from)) return { distance: real.rationalToDecimal(from, 7, -1), size: from };
   }
-  // The printed number itself must keep it: rounding down may only shrink the interval.
-  return { distance: real.rationalToDecimal(low, 7, -1), size: low };
+  return null;
 }
 
-/** All x within the distance, on the sides that the expansion serves. */
-function around(expansion: Expansion, distance: Rational): ClosedInterval {
+/** All x within the distance, on the sides that the expansion serves and the interval has. */
+function within(expansion: Expansion, size: Expression, sides?: ClosedInterval): ClosedInterval {
   const infinity = build.constant('infinity');
-  const size = build.number(distance);
-  if (expansion.point === 'inf') return { lower: build.number(Q.reciprocal(distance)), upper: infinity };
-  if (expansion.point === '-inf') return { lower: build.negation(infinity), upper: build.number(Q.negate(Q.reciprocal(distance))) };
+  const one = build.number(1);
+  if (expansion.point === 'inf') return { lower: build.quotient(one, size), upper: infinity };
+  if (expansion.point === '-inf') return { lower: build.negation(infinity), upper: build.negation(build.quotient(one, size)) };
   const point: Expression = expansion.point;
   const onePoint = expansion.side !== 'both' && !expansion.left;
+  const notLeft = sides !== undefined && compareReal(sides.lower, point, []) >= 0;
+  const notRight = sides !== undefined && compareReal(sides.upper, point, []) <= 0;
   return {
-    lower: onePoint && expansion.side === 'right' ? point : build.difference(point, size),
-    upper: onePoint && expansion.side === 'left' ? point : build.sum(point, size),
+    lower: (onePoint && expansion.side === 'right') || notLeft ? point : build.difference(point, size),
+    upper: (onePoint && expansion.side === 'left') || notRight ? point : build.sum(point, size),
   };
 }

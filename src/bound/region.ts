@@ -39,6 +39,18 @@ export function isExactlyZero(e: Expression, assumptions: readonly Assumption[])
   }
 }
 
+/** The tree in the field's normal form for a variable of one sign; the tree itself where the field does not know it. */
+export function normalForm(e: Expression, variable: string, sign: '>' | '<'): Expression {
+  try {
+    const field = createField([{ kind: 'relation', left: build.symbol(variable), relation: sign, right: build.number(0) }], budget(200));
+    const value = field.toExpression(field.fromExpression(e));
+    return field.needed.size === 0 ? value : e;
+  } catch (error) {
+    if (error instanceof Declined) return e;
+    throw error;
+  }
+}
+
 const isInfinity = (e: Expression): boolean => e.kind === 'constant' && e.name === 'infinity';
 const endOf = (e: Expression): Expression | 'inf' | '-inf' => {
   if (isInfinity(e)) return 'inf';

@@ -5,7 +5,7 @@ import { Declined } from '../outcome.ts';
 import { describe } from '../functions/index.ts';
 import { type Ball, enclose, type LogModel, logRange, type Model, real } from '../rigorous/index.ts';
 import { scaleOut } from './homogeneous.ts';
-import { denominatorOf, type Local, localDomain, localModel, logModelOf, remainderAtPoint, sumOf } from './local.ts';
+import { denominatorOf, isPowerSum, type Local, localDomain, localModel, logModelOf, remainderAtPoint, sumOf } from './local.ts';
 import { ballNumbers, doubles, type Numbers, type ParameterBalls, withValues } from './numbers.ts';
 import { type PieceTask, refinePieces, remainderAt } from './pieces.ts';
 import { provenPlace } from './singular.ts';
@@ -330,7 +330,7 @@ interface Unbounded {
 function atPoint<T>(segment: Segment, n: Numbers<T>, problem: BoundProblem, variable: string, lower: T, check: () => void, memory: Memory): Near<T> | Unbounded | null {
   const { r } = n;
   const base = denominatorOf(segment.expansion);
-  if (base === null) return null;
+  if (base === null || !isPowerSum(segment.expansion)) return null;
   const count = Math.max(2, segment.expansion.terms.length);
   let settledLower = lower;
   for (let cut = 0; cut < 24; cut += 1) {
@@ -406,7 +406,9 @@ function withLogarithms<T>(r: Numbers<T>['r'], rest: LogModel<T>, f: LogModel<T>
   if (lead === undefined || lead.coefficients.length === 0) return null;
   const shift = (g: Model<T>): Model<T> => ({ ...g, valuation: g.valuation - lead.valuation });
   const numerator = logRange(r, rest.map(shift));
-  const denominator = logRange(r, f.map(shift));
+  // log s <= 0: where (-1)^j f_j have one sign, no power of the logarithm makes |f| smaller.
+  const signs = f.filter((g) => g.coefficients.length > 0 || !r.isZero(g.tail)).map((g) => (r.isPositive(g.range) ? 1 : r.isNegative(g.range) ? -1 : 0) * (f.indexOf(g) % 2 === 0 ? 1 : -1));
+  const denominator = f.length > 1 && signs[0] !== 0 && signs.every((sign) => sign === signs[0]) ? lead.range : logRange(r, f.map(shift));
   const quotient = numerator === null || denominator === null ? null : r.divide(numerator, denominator);
   return quotient === null ? null : r.upperEnd(r.absolute(quotient));
 }
@@ -487,6 +489,13 @@ function reachesLocalEnd(segment: Segment): boolean {
 function byDifference<T>(segment: Segment, sum: Expression, n: Numbers<T>, problem: BoundProblem, variable: string, lower: T, check: () => void): Near<T> | Unbounded | null {
   const { r } = n;
   const settled = (x: T): boolean => !r.isPositive(r.subtract(x, lower));
+  if (problem.measure === 'relative' && segment.expansion.prefactor !== null) {
+    const scaled = inPrefactor(segment.expansion, segment.expansion.prefactor);
+    const near = byDifference({ ...segment, expansion: scaled }, sumOf(scaled), n, problem, variable, lower, check);
+    if (near === null || near.kind === 'unbounded') return near;
+    // The rest is of f and its own sum again.
+    return { ...near, rest: near.rest && { ...near.rest, expansion: segment.expansion, sum }, steps: (show) => ['f and the sum are divided by the prefactor.', ...near.steps(show)] };
+  }
   if (segment.expansion.oscillating && problem.measure === 'absolute') return byWaves(segment, sum, n, variable, lower, check);
   for (let cut = 0; cut < 12; cut += 1) {
     const part = cutSegment(segment, cut);
@@ -543,3 +552,6 @@ function byWaves<T>(segment: Segment, sum: Expression, n: Numbers<T>, variable: 
   }
   return null;
 }
+
+/** f over its prefactor, and the sum without it: their ratio is that of f and the sum. */
+const inPrefactor = (expansion: Expansion, prefactor: Expression): Expansion => ({ ...expansion, function: build.quotient(expansion.function, prefactor), prefactor: null });

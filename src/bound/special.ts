@@ -8,7 +8,7 @@ import { build, type Expression, structureKey } from '../expression/index.ts';
 import { describe } from '../functions/index.ts';
 import { type Ball, complex, type ComplexBall, enclose, interval, type Model, type ModelArithmetic, real } from '../rigorous/index.ts';
 import { polygammaSeries } from './gammaSeries.ts';
-import { equationSeries, hypergeometricAtZero, type RealSeries } from './holonomic.ts';
+import { equationSeries, hasEquation, hypergeometricAtZero, type RealSeries } from './holonomic.ts';
 import type { Numbers } from './numbers.ts';
 
 /** Where f is analytic in its varying argument: everywhere, off (-inf, end], or off [end, inf). */
@@ -111,6 +111,8 @@ export function specialModel<T>(id: string, args: readonly Expression[], models:
   if (byEquation !== null) return byEquation;
   const domain = domainOf(id, args, index);
   if (domain === null || !describe(id)?.enclose) return null;
+  // With an equation whose only singular point is that end, a shorter piece serves better than values on a circle.
+  if (domain.kind === 'offLeft' && hasEquation(id, args, index)) return null;
   const centre = u.coefficients[0] ?? r.zero;
   const ball = n.toBall(centre);
   const parameters: ComplexBall[] = [];

@@ -52,6 +52,8 @@ export interface TermsNeeded {
   readonly estimate?: number;
   readonly best?: { readonly terms: number; readonly bound: string };
   readonly reach?: Reach;
+  /** Degree of a polynomial fitted on the interval, proven to keep the tolerance; set where no truncated expansion does. */
+  readonly fittedDegree?: number;
 }
 
 /** `distance` is a decimal rounded down, in the variable's unit (|x - a|, or 1/|x| at infinity); `inf` where there is no limit. */

@@ -24,6 +24,8 @@ export interface ModelTreeContext<T> {
   readonly call?: (id: string, args: readonly Expression[], models: readonly Model<T>[], isConstant: (e: Expression) => boolean) => Model<T> | null;
   /** An identity for a call that suits the place of its arguments; what it returns is modelled instead. */
   readonly rewrite?: (id: string, args: readonly Expression[], models: readonly Model<T>[]) => Expression | null;
+  /** An equal tree in which what cancels symbolically is gone: exponents that grow are added through it. */
+  readonly simplify?: (e: Expression) => Expression;
   readonly check?: () => void;
   /** Functions being modelled through their derivatives, to end circles. */
   readonly deriving?: ReadonlySet<string>;
@@ -88,8 +90,10 @@ export function logModelOfTree<T>(e: Expression, context: ModelTreeContext<T>): 
         const value = visit(node.operand);
         return value && value.map((f) => m.negate(f));
       }
-      case 'sum':
-        return fold(node.terms, (x, y) => logs.add(x, y));
+      case 'sum': {
+        const joined = unbounded ? joinedLogarithms(node.terms) : null;
+        return joined ? visit(joined) : fold(node.terms, (x, y) => logs.add(x, y));
+      }
       case 'product':
         return withExponents(node) ?? fold(node.factors, (x, y) => logs.multiply(x, y));
       case 'quotient': {
@@ -118,7 +122,7 @@ export function logModelOfTree<T>(e: Expression, context: ModelTreeContext<T>): 
   };
   /** A product with several exponentials of unbounded arguments: the arguments are added first, so that what cancels between them does. Null where there are not two of them. */
   const withExponents = (node: Expression): LogModel<T> | null => {
-    const exponents: LogModel<T>[] = [];
+    const exponents: { readonly model: LogModel<T>; readonly tree: Expression }[] = [];
     const others: { readonly factor: LogModel<T>; readonly below: boolean }[] = [];
     let grows = 0;
     const take = (e: Expression, below: boolean): boolean => {
@@ -129,7 +133,7 @@ export function logModelOfTree<T>(e: Expression, context: ModelTreeContext<T>): 
         const u = visit(exponent);
         if (u === null) return false;
         if (u.some((f) => f.valuation < 0)) grows += 1;
-        exponents.push(below ? u.map((f) => m.negate(f)) : u);
+        exponents.push(below ? { model: u.map((f) => m.negate(f)), tree: build.negation(exponent) } : { model: u, tree: exponent });
         return true;
       }
       if (e.kind === 'call' && context.rewrite && !isConstant(e)) {
@@ -149,13 +153,39 @@ export function logModelOfTree<T>(e: Expression, context: ModelTreeContext<T>): 
     };
     if (!unbounded || !take(node, false) || grows < 2) return null;
     let total: LogModel<T> | null = [m.constant(a.zero)];
-    for (const u of exponents) total = logs.add(total, u);
+    for (const u of exponents) total = logs.add(total, u.model);
+    // What cancels only in exact terms leaves a coefficient about zero at a negative power.
+    const undecided = total.some((f) => f.valuation < 0 && f.coefficients[0] !== undefined && a.containsZero(f.coefficients[0]));
+    if (undecided && context.simplify) total = visit(context.simplify(build.sum(...exponents.map((u) => openAtInfinity(u.tree)))));
+    if (total === null) return null;
     let result: LogModel<T> | null = logs.elementary('exp', total);
     for (const { factor, below } of others) {
       const part: LogModel<T> | null = below ? logs.power(factor, { num: -1n, den: 1n }) : factor;
       result = result && part && logs.multiply(result, part);
     }
     return result;
+  };
+  /** A tree of sums, products and negations with its calls of unbounded arguments rewritten. */
+  const openAtInfinity = (e: Expression): Expression => {
+    switch (e.kind) {
+      case 'sum':
+        return build.sum(...e.terms.map(openAtInfinity));
+      case 'product':
+        return build.product(...e.factors.map(openAtInfinity));
+      case 'negation':
+        return build.negation(openAtInfinity(e.operand));
+      case 'call': {
+        const models: Model<T>[] = [];
+        for (const arg of e.args) {
+          const f = pure(visit(arg));
+          if (f === null) return e;
+          models.push(f);
+        }
+        return (models.some((f) => f.valuation < 0) ? context.rewrite?.(e.function, e.args, models) : null) ?? e;
+      }
+      default:
+        return e;
+    }
   };
   /** Only where a symbol itself grows without bound are products taken apart. */
   const unbounded = [...environment.values()].some((leaf) => leaf.valuation < 0);
@@ -301,6 +331,46 @@ export function logModelOfTree<T>(e: Expression, context: ModelTreeContext<T>): 
     return evaluateTree(build.call(id, ...args.map((arg, k) => (k === index ? build.symbol(names[k] ?? '') : arg))), new Map(values.flatMap((v, k) => (k === index ? [[names[k] ?? '', v] as const] : []))), trees, context.describe);
   };
   return visit(e);
+}
+
+/** c log u - c log v as c log(u/v), wherever two terms of a sum go together so; null where none do. */
+function joinedLogarithms(terms: readonly Expression[]): Expression | null {
+  interface Part {
+    readonly negative: boolean;
+    readonly others: Expression;
+    readonly argument: Expression;
+  }
+  const partOf = (e: Expression): Part | null => {
+    if (e.kind === 'negation') {
+      const inner = partOf(e.operand);
+      return inner && { ...inner, negative: !inner.negative };
+    }
+    if (e.kind === 'call') return e.function === 'log' && e.args[0] ? { negative: false, others: build.number(1), argument: e.args[0] } : null;
+    if (e.kind !== 'product') return null;
+    const index = e.factors.findIndex((factor) => factor.kind === 'call' && factor.function === 'log');
+    const factor = e.factors[index];
+    if (factor?.kind !== 'call' || !factor.args[0]) return null;
+    let negative = false;
+    const others = e.factors.filter((_, k) => k !== index).map((other) => {
+      const minus = other.kind === 'number' && other.value.num < 0n;
+      if (minus) negative = !negative;
+      return other.kind === 'number' && minus ? build.number(Q.negate(other.value)) : other;
+    });
+    return { negative, others: build.product(...others.filter((other) => !build.isOneNumber(other))), argument: factor.args[0] };
+  };
+  const rest = [...terms];
+  for (const [i, one] of terms.entries()) {
+    const first = partOf(one);
+    if (!first) continue;
+    for (const other of terms.slice(i + 1)) {
+      const second = partOf(other);
+      if (!second || first.negative === second.negative || !sameExpression(first.others, second.others)) continue;
+      const [above, below] = first.negative ? [second, first] : [first, second];
+      const joined = build.product(first.others, build.call('log', build.quotient(above.argument, below.argument)));
+      return build.sum(joined, ...rest.filter((term) => term !== one && term !== other));
+    }
+  }
+  return null;
 }
 
 /** The argument of the first exponential in a sum of exponentials and other terms. */

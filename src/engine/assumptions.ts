@@ -7,7 +7,7 @@ const against = (left: Expression, relation: '<' | '<=' | '>' | '>=' | '!='): As
 
 /** What a property of a quantity means as relations and domains. A domain speaks of one symbol; of anything else only the sign is kept. */
 function meaning(subject: Expression, property: Property): readonly Assumption[] {
-  const domain = (name: 'integer' | 'real' | 'complex'): readonly Assumption[] => (subject.kind === 'symbol' ? [{ kind: 'domain', symbol: subject.name, domain: name }] : []);
+  const domain = (name: 'integer' | 'real' | 'complex' | 'operator'): readonly Assumption[] => (subject.kind === 'symbol' ? [{ kind: 'domain', symbol: subject.name, domain: name }] : []);
   switch (property) {
     case 'positive':
       return [against(subject, '>')];
@@ -29,6 +29,8 @@ function meaning(subject: Expression, property: Property): readonly Assumption[]
     case 'rational':
     case 'noninteger':
       return domain('real');
+    case 'operator':
+      return subject.kind === 'symbol' || subject.kind === 'vector' ? [{ kind: 'domain', symbol: subject.name ?? '', domain: 'operator' }] : [];
     case 'complex':
       return domain('complex');
   }

@@ -1,5 +1,6 @@
 /** What an expand request asks, as exact data: function, variable, point, side, assumptions. */
 import type { Assumption, Expression, LimitNode } from '../expression/index.ts';
+import { operatorNames } from '../expand/index.ts';
 import { failure, type Outcome, success } from '../outcome.ts';
 import type { ExpandRequest, Side } from '../protocol.ts';
 import { principalSide, readExact } from '../read/index.ts';
@@ -50,7 +51,7 @@ export function equationOf(formula: Expression): Expression {
 }
 
 /** The variable named in the request, or the one that the text leaves no doubt about, with the point that goes with it. */
-export function variableOf(request: ExpandRequest, target: Expression, source: SourceFormula): Outcome<{ readonly variable: Expression; readonly point: Point }> {
+export function variableOf(request: ExpandRequest, target: Expression, source: SourceFormula, assumptions: readonly Assumption[] = []): Outcome<{ readonly variable: Expression; readonly point: Point }> {
   const asked = request.point === undefined ? null : readPoint(request.point);
   if (asked && !asked.ok) return asked;
   if (request.variable !== undefined) {
@@ -60,7 +61,11 @@ export function variableOf(request: ExpandRequest, target: Expression, source: S
   }
   const { found, list } = candidatesOf(source, target);
   if (found && !isUnknown(found.variable.expression, source)) return success({ variable: found.variable.expression, point: asked?.value ?? pointOf(found.point) });
-  const others = list.filter((c) => !isUnknown(c.expression, source));
+  const operators = operatorNames(target, assumptions);
+  const isOperator = (e: Expression): boolean => (e.kind === 'symbol' || e.kind === 'vector') && operators.includes(e.name ?? '');
+  const movable = list.filter((c) => !isUnknown(c.expression, source));
+  const scalars = movable.filter((c) => !isOperator(c.expression));
+  const others = scalars.length > 0 ? scalars : movable;
   const [only] = others;
   if (only && others.length === 1) return success({ variable: only.expression, point: asked?.value ?? ZERO });
   if (others.length === 0) return failure('bad-request', 'This expression contains no symbol to expand in; choose one that does.');
@@ -91,10 +96,10 @@ export function questionOf(request: ExpandRequest, source: SourceFormula): Outco
   const written = functionOf(source.expression);
   if (written.kind === 'limit' && request.variable === undefined) return limitQuestion(request, written);
   const target = written;
-  const variable = variableOf(request, target, source);
-  if (!variable.ok) return variable;
   const assumptions = readAllAssumptions(request.assume);
   if (!assumptions.ok) return assumptions;
+  const variable = variableOf(request, target, source, assumptions.value);
+  if (!variable.ok) return variable;
   const stated = statedConditions(source.conditions, variable.value.variable);
   return success({
     function: withValues(target, stated),

@@ -1,5 +1,5 @@
 /** The door's function: both sides of a point, merged where they provably agree. */
-import { build, dependsOn, type Expression, Q } from '../expression/index.ts';
+import { build, dependsOn, type Expression, Q, walk } from '../expression/index.ts';
 import { attempt, type Budget, Declined, type Outcome } from '../outcome.ts';
 import { addElements, isRational, isRealMulti, multiplyElements, plainText } from '../series/index.ts';
 import { assemble } from './assemble.ts';
@@ -11,7 +11,8 @@ import { isEvenInRoot } from './even-root.ts';
 import { generalTerm } from './general.ts';
 import { radiusOf } from './radius.ts';
 import { expandSide, type SideResult } from './side.ts';
-import { expandVectors, hasVectors } from './vectors/index.ts';
+import { expandOperators, type Letters, lettersOf } from './noncommuting/index.ts';
+import { expandVectors, hasVectors, isVectorFormula } from './vectors/index.ts';
 
 /**
  * The expansion of problem.function in problem.variable (a symbol, or a quantity like v/c taken as one) at the point, to `terms` terms or to `order`.
@@ -20,12 +21,33 @@ import { expandVectors, hasVectors } from './vectors/index.ts';
 export function expand(problem: ExpansionProblem, budget: Budget): Outcome<Expansion> {
   return attempt(() => {
     requireShallow(problem.function);
-    if (hasVectors(problem.function)) return expandVectors(problem, budget, (inner) => inVariable(inner, budget));
-    return inVariable(problem, budget);
+    return inLetters(problem, budget);
   });
 }
 
-function inVariable(problem: ExpansionProblem, budget: Budget): Expansion {
+/** Operators and vectors have rules of their own; what they leave to do is scalar. */
+function inLetters(problem: ExpansionProblem, budget: Budget): Expansion {
+  const scalar = (inner: ExpansionProblem): Expansion => inVariable(inner, budget);
+  const vectors = hasVectors(problem.function);
+  const letters = vectors && isVectorFormula(problem.function) ? null : lettersOf(problem.function, problem.assumptions);
+  if (letters && letters.operators.size === 1 && !vectors) return oneOperator(problem, letters, budget);
+  if (letters) return expandOperators(problem, letters, budget, scalar);
+  return vectors ? expandVectors(problem, budget, scalar) : scalar(problem);
+}
+
+/** Everything made of one operator commutes: what has no expansion in words is left to the commuting rules. */
+function oneOperator(problem: ExpansionProblem, letters: Letters, budget: Budget): Expansion {
+  const scalar = (inner: ExpansionProblem): Expansion => inVariable(inner, budget);
+  try {
+    return expandOperators(problem, letters, budget, scalar);
+  } catch (error) {
+    if (!(error instanceof Declined) || error.failure.code !== 'no-expansion' || [...walk(problem.function)].some((n) => n.kind === 'vector')) throw error;
+    return scalar(problem);
+  }
+}
+
+/** A formula without vectors and operators, in a symbol or a compound quantity. */
+export function inVariable(problem: ExpansionProblem, budget: Budget): Expansion {
   if (problem.variable.kind !== 'symbol') return inCompound(problem, (inner) => expandSymbol(inner, budget));
   return expandSymbol(problem, budget);
 }

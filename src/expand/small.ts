@@ -7,11 +7,13 @@ import { compareExponents, exactOf, insertFormal, isRational, monomial, type Mul
 import { requireShallow } from './depth.ts';
 import { evaluate } from './evaluate.ts';
 import type { Expansion, ExpansionTerm, SmallProblem, SmallQuantity } from './expansion.ts';
+import { inVariable } from './expand.ts';
 import { factorTree, rawTerms } from './flatten.ts';
+import { expandSmallOperators, lettersOf } from './noncommuting/index.ts';
 import { openSession } from './session.ts';
 import { openContext } from './open-side.ts';
 import { expandScaled } from './scaled.ts';
-import { expandSmallVectors, hasVectors } from './vectors/index.ts';
+import { expandSmallVectors, hasVectors, isVectorFormula } from './vectors/index.ts';
 
 /**
  * Each quantity q becomes point + s^weight q, the function is expanded in s -> 0+, then s = 1: terms are blocks of equal weight, coefficients are homogeneous in the quantities.
@@ -21,9 +23,11 @@ export function expandSmall(problem: SmallProblem, budget: Budget): Outcome<Expa
   return attempt(() => {
     requireShallow(problem.function);
     const vectors = hasVectors(problem.function);
+    const letters = vectors && isVectorFormula(problem.function) ? null : lettersOf(problem.function, problem.assumptions);
     if (problem.quantities.length === 0 || problem.quantities.some((q) => q.symbol.kind !== 'symbol' && !vectors)) throw new Declined('bad-request', 'Name the small quantities, each by one symbol.');
     if (problem.quantities.some((q) => Q.signOf(q.weight) <= 0)) throw new Declined('bad-request', 'The weight of a small quantity must be positive.');
     if ((problem.terms === undefined) === (problem.order === undefined)) throw new Declined('bad-request', 'Ask for a number of terms or for an order, not both.');
+    if (letters) return expandSmallOperators(problem, letters, budget, (inner) => inVariable(inner, budget));
     if (vectors) return expandSmallVectors(problem, budget);
     return problem.iterated ? iterated(problem, budget) : weighted(problem, budget);
   });

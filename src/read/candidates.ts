@@ -44,7 +44,12 @@ const ZERO = build.number(0);
 export function candidates(expression: Expression, around: Surroundings = {}): Candidates {
   const symbols = freeSymbols(expression);
   const ratios = ratiosOf(expression);
-  const list: Candidate[] = [...ratios, ...symbols.map(symbolCandidate)];
+  const vectors = vectorsOf(expression);
+  const list: Candidate[] = [...ratios, ...vectors, ...symbols.map(symbolCandidate)];
+  if (vectors.length > 0) {
+    const found = smallVector(vectors, around) ?? (vectors.length === 1 && symbols.length === 0 ? vectorAt(vectors[0]) : null);
+    if (found) return { found, list };
+  }
   const known = (names: readonly string[]): boolean => names.every((name) => symbols.includes(name));
   for (const order of around.orders ?? []) {
     const found = fromOrder(order, ratios);
@@ -56,6 +61,8 @@ export function candidates(expression: Expression, around: Surroundings = {}): C
   }
   const worded = fromText(around.after ?? '', symbols, ratios) ?? fromText(around.before ?? '', symbols, ratios);
   if (worded) return { found: worded, list };
+  // Beside vectors no scalar is the only candidate.
+  if (vectors.length > 0) return { found: null, list };
   // Symbols that only multiply the whole are no candidates: in E_0 \sqrt{1+\epsilon} only \epsilon is.
   const core = withoutPrefactor(expression);
   const active = core.flatMap(freeSymbols).filter((name, i, all) => all.indexOf(name) === i);
@@ -68,6 +75,57 @@ export function candidates(expression: Expression, around: Surroundings = {}): C
   if (ratios.length === 1 && ratio && core.every((part) => coversAll(part, ratio))) return { found: { variable: ratio, point: ZERO, from: 'only ratio' }, list };
   return { found: null, list };
 }
+
+/** Bold letters, in order of appearance; those under a hat are directions and do not vary. */
+function vectorsOf(expression: Expression): readonly Candidate[] {
+  const found = new Map<string, Candidate>();
+  for (const e of walk(expression)) if (e.kind === 'vector' && e.operation === 'symbol' && e.name !== undefined && !/^\\(?:wide)?hat\{/.test(e.name)) found.set(e.name, { name: e.name, expression: { kind: 'vector', operation: 'symbol', name: e.name, args: [] }, kind: 'symbol' });
+  return [...found.values()];
+}
+const vectorAt = (variable: Candidate | undefined, point: Expression = ZERO): Found | null => (variable ? { variable, point, from: 'only symbol' } : null);
+
+/** The vector that an O-term (`O(r'^3)`, `O(|\mathbf{d}|^2)`, `O(r^{-3})`) or a condition (`|\mathbf{d}| \ll |\mathbf{r}|`, `r' \ll r`) speaks of by its length. */
+function smallVector(vectors: readonly Candidate[], around: Surroundings): Found | null {
+  const lengthOf = (e: Expression): Candidate | undefined => {
+    if (e.kind === 'vector') return e.operation === 'symbol' ? vectors.find((v) => v.name === e.name) : e.operation === 'norm' && e.args[0] ? lengthOf(e.args[0]) : undefined;
+    return e.kind === 'symbol' ? vectors.find((v) => bareLetter(v.name) === e.name) : undefined;
+  };
+  for (const order of around.orders ?? []) {
+    if (order.kind !== 'order') continue;
+    const { argument } = order;
+    const inverted = argument.kind === 'quotient';
+    const base = inverted ? argument.denominator : argument;
+    const power = base.kind === 'power' ? rationalOf(base.exponent) : Q.ONE;
+    const vector = lengthOf(base.kind === 'power' ? base.base : base);
+    if (vector && power) return { variable: vector, point: (Q.signOf(power) < 0) !== inverted ? INFINITY : ZERO, from: 'order term' };
+  }
+  for (const condition of around.conditions ?? []) {
+    if (condition.kind !== 'relation') continue;
+    const [left, right] = condition.sides;
+    const [kind] = condition.relations;
+    if (!left || !right || (kind !== 'll' && kind !== 'gg')) continue;
+    const vector = lengthOf(kind === 'll' ? left : right);
+    if (vector) return { variable: vector, point: ZERO, from: 'condition' };
+  }
+  return vectorInText(vectors, around.after ?? '') ?? vectorInText(vectors, around.before ?? '');
+}
+
+/** "for $r' \ll r$", "small $\mathbf{d}$", "$|\mathbf{r}| \to \infty$" in running text. */
+function vectorInText(vectors: readonly Candidate[], text: string): Found | null {
+  const plain = text
+    .replace(/\\(?:vec|mathbf|bm|boldsymbol|overrightarrow|pmb|mathbfit)\s*(?:\{([^{}]*)\}|([A-Za-z]))/g, '$1$2')
+    .replace(/[${}|]|\\(?:left|right|[lr]vert)(?![A-Za-z])/g, ' ')
+    .replace(/\s+/g, ' ');
+  for (const variable of vectors) {
+    const letter = bareLetter(variable.name).replace(/[{}]/g, '').replace(/[.*+?^$()[\]\\]/g, '\\$&');
+    const name = `(?<![A-Za-z\\\\])${letter}(?![A-Za-z_'])`;
+    if (new RegExp(`${name} ?(?:\\\\ll(?![A-Za-z])|≪|<<)|(?:\\\\gg|≫|>>) ?${name}|\\bsmall ${name}|${name} (?:is|being) small|${name} ?(?:\\\\to|→) ?0`).test(plain)) return { variable, point: ZERO, from: 'text' };
+    if (new RegExp(`\\blarge ${name}|${name} (?:is|being) large|${name} ?(?:\\\\to|→) ?(?:\\\\infty|∞)`).test(plain)) return { variable, point: INFINITY, from: 'text' };
+  }
+  return null;
+}
+/** `r'` for `\mathbf{r}'`. */
+const bareLetter = (name: string): string => name.replace(/\\[a-z]+\{([^{}]*)\}/g, '$1');
 
 /** What is left of an expression without factors that are monomials. */
 function withoutPrefactor(e: Expression): readonly Expression[] {

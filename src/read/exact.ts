@@ -15,7 +15,7 @@ export function readExact(text: string, options: ReadOptions = {}): Outcome<Expr
   return found;
 }
 
-export const PROPERTIES = ['integer', 'real', 'positive', 'negative', 'nonzero', 'nonnegative', 'nonpositive', 'even', 'odd', 'natural', 'complex', 'noninteger', 'rational'] as const;
+export const PROPERTIES = ['integer', 'real', 'positive', 'negative', 'nonzero', 'nonnegative', 'nonpositive', 'even', 'odd', 'natural', 'complex', 'noninteger', 'rational', 'operator'] as const;
 export type Property = (typeof PROPERTIES)[number];
 
 /** One thing taken for granted. A chain such as `0.9 <= c <= 1.1` gives one assumption a relation. */
@@ -23,16 +23,16 @@ export type Assumption =
   | { readonly kind: 'relation'; readonly left: Expression; readonly relation: '<' | '<=' | '>' | '>=' | '!=' | '='; readonly right: Expression }
   | { readonly kind: 'property'; readonly subject: Expression; readonly property: Property };
 
-const WORDS: Readonly<Record<string, Property>> = { integer: 'integer', integers: 'integer', int: 'integer', whole: 'integer', real: 'real', reals: 'real', positive: 'positive', negative: 'negative', nonzero: 'nonzero', 'non-zero': 'nonzero', nonnegative: 'nonnegative', 'non-negative': 'nonnegative', nonpositive: 'nonpositive', 'non-positive': 'nonpositive', even: 'even', odd: 'odd', natural: 'natural', complex: 'complex', noninteger: 'noninteger', 'non-integer': 'noninteger', rational: 'rational' };
+const WORDS: Readonly<Record<string, Property>> = { integer: 'integer', integers: 'integer', int: 'integer', whole: 'integer', real: 'real', reals: 'real', positive: 'positive', negative: 'negative', nonzero: 'nonzero', 'non-zero': 'nonzero', nonnegative: 'nonnegative', 'non-negative': 'nonnegative', nonpositive: 'nonpositive', 'non-positive': 'nonpositive', even: 'even', odd: 'odd', natural: 'natural', complex: 'complex', noninteger: 'noninteger', 'non-integer': 'noninteger', rational: 'rational', operator: 'operator', operators: 'operator', matrix: 'operator', matrices: 'operator', noncommuting: 'operator', 'non-commuting': 'operator' };
 const SETS: Readonly<Record<string, Property>> = { Z: 'integer', N: 'natural', R: 'real', C: 'complex', Q: 'rational' };
 
-/** `a > 0`, `n integer`, `x is real`, `0.9 <= c <= 1.1`, `a \ne 0`, `n \in \mathbb{Z}`, several joined by commas or `and`. */
+/** `A, B do not commute`, `A operator`, `a > 0`, `n integer`, `x is real`, `0.9 <= c <= 1.1`, `a \ne 0`, `n \in \mathbb{Z}`, several joined by commas or `and`. */
 export function readAssumption(text: string, options: ReadOptions = {}): Outcome<readonly Assumption[]> {
   const out: Assumption[] = [];
   /** Names waiting for what is said of them: `a, b > 0`. */
   let waiting: string[] = [];
   for (const part of splitList(text)) {
-    if (/^\\?[A-Za-z]\w*(?:_\{[^{}]*\})?$/.test(part)) {
+    if (/^(?:\\?[A-Za-z]\w*|\\[a-z]+\s*\{\w+\})(?:_\{[^{}]*\}|_\w)?$/.test(part)) {
       waiting.push(part);
       continue;
     }
@@ -53,7 +53,8 @@ export function readAssumption(text: string, options: ReadOptions = {}): Outcome
   return out.length > 0 ? success(out) : failure('bad-request', 'The assumption is empty; write for example a > 0 or n integer.');
 }
 
-function readOneAssumption(text: string, options: ReadOptions): Outcome<readonly Assumption[]> {
+function readOneAssumption(given: string, options: ReadOptions): Outcome<readonly Assumption[]> {
+  const text = given.replace(/\s+(?:do|does)(?: not|n't) commute\s*$/i, ' operator');
   const membership = /^(.*?)\s*(?:\\in|∈)\s*(?:\\(?:mathbb|mathbf|mathrm|Bbb)\s*\{?\s*([ZNRCQ])\s*\}?|([ℤℕℝℂℚ]))\s*(?:\^?\{?[+*]\}?)?$/.exec(text);
   if (membership) {
     const letter = membership[2] ?? { 'ℤ': 'Z', 'ℕ': 'N', 'ℝ': 'R', 'ℂ': 'C', 'ℚ': 'Q' }[membership[3] ?? ''] ?? '';

@@ -87,6 +87,7 @@ export function termTree(expansion: Expansion, term: ExpansionTerm, placement: P
 
 /** `\frac{\epsilon^2}{2} [A, B]`: scalars with their fraction, then what must keep its place. */
 function operatorsLast(coefficient: Factors, monomial: Factors): Expression {
+  if (monomial.denominator.length > 0) return arrange(coefficient, monomial);
   const behind = coefficient.numerator.filter(standsBehind);
   const scalars = { ...coefficient, numerator: coefficient.numerator.filter((f) => !standsBehind(f)) };
   return arrange(multiplyFactors(scalars, monomial), { ...NO_FACTORS, numerator: behind }, 'outside');

@@ -236,6 +236,7 @@ class LatexWriter {
     let inner = this.write(base);
     const needsParentheses = inner.level < Level.Atom || base.kind === 'power' || base.kind === 'root' || base.kind === 'quotient' || (base.kind === 'number' && base.value.den !== 1n) || (base.kind === 'apply' && base.args.length > 0);
     if (needsParentheses) inner = this.parenthesised(inner);
+    if (base.kind === 'symbol' && /\^(?:\*|\\[A-Za-z]+|\{[^{}]*\})$/.test(inner.text)) inner = this.parenthesised(inner);
     const text = /'+$/.test(inner.text) ? `{${inner.text}}^${upper.text}` : `${inner.text}^${upper.text}`;
     return { text, level: Level.Power, tall: inner.tall };
   }
@@ -359,7 +360,7 @@ class LatexWriter {
       case 'determinant': {
         const sign = operation === 'trace' ? '\\operatorname{tr}' : '\\det';
         const inner = first ? this.write(first) : atom('');
-        return inner.level === Level.Atom && inner.text.length === 1 ? { text: `${sign} ${inner.text}`, level: Level.Product, tall: false } : { text: `${sign}(${inner.text})`, level: Level.Power, tall: false };
+        return /^(?:[A-Za-z]|\\mathbf\{[A-Za-z]\})$/.test(inner.text) ? { text: `${sign} ${inner.text}`, level: Level.Product, tall: false } : { text: `${sign}(${inner.text})`, level: Level.Power, tall: false };
       }
       case 'tuple':
         return atom(`\\left(${list()}\\right)`);

@@ -96,11 +96,13 @@ function raised(f: Expression, n: bigint): Expression {
   return n === 1n ? f : build.power(f, n);
 }
 
-/** Operators and derivatives along a direction, and sums of them: they follow the fraction that multiplies them. */
+/** Operators, their traces, derivatives along a direction, and sums of them: they follow the fraction that multiplies them. */
 export function standsBehind(e: Expression): boolean {
   switch (e.kind) {
     case 'vector':
-      return e.operation === 'directional' || e.operation === 'ordered' || e.operation === 'commutator' || e.operation === 'anticommutator';
+      return e.operation !== 'symbol' && e.operation !== 'norm' && e.operation !== 'dot' && e.operation !== 'cross' && e.operation !== 'tuple';
+    case 'power':
+      return e.base.kind === 'vector' && standsBehind(e.base);
     case 'sum':
       return e.terms.some(standsBehind);
     case 'product':

@@ -117,7 +117,7 @@ function vectorPiece(e: Extract<Expression, { kind: 'vector' }>, symbols: Numeri
   const [first, second] = e.args;
   switch (e.operation) {
     case 'ordered':
-      return { text: e.args.map(inner).join('*'), binding: Binding.Product };
+      return e.args.length === 1 && first ? write(first) : { text: e.args.map(inner).join('*'), binding: Binding.Product };
     case 'commutator':
     case 'anticommutator':
       return first && second ? atom(`(${inner(first)}*${inner(second)} ${e.operation === 'commutator' ? '-' : '+'} ${inner(second)}*${inner(first)})`) : atom('0');

@@ -52,14 +52,39 @@ const PLAIN: Dialect = {
       case 'relation':
         return { text: e.sides.map((s) => enclosed(write(s), Binding.Sum)).reduce((left, right, i) => `${left} ${LINEAR_RELATIONS[e.relations[i - 1] ?? '=']} ${right}`), binding: Binding.Relation };
       case 'vector':
-        if (e.operation === 'symbol') return atom(plainSymbol(e.name ?? 'v'));
-        if (e.operation === 'ordered') return { text: e.args.map((a) => enclosed(write(a), Binding.Power)).join('*'), binding: Binding.Product };
-        return atom(`${e.operation}(${list(e.args, write)})`);
+        return vectorPiece(e, write);
       default:
         return write(e);
     }
   },
 };
+
+/** Vectors have no plain notation: they are written as in LaTeX, which readers of exact strings take too. */
+function vectorPiece(e: Extract<Expression, { kind: 'vector' }>, write: (e: Expression) => Piece): Piece {
+  const inner = (x: Expression): string => enclosed(write(x), Binding.Power);
+  switch (e.operation) {
+    case 'symbol':
+      return atom(e.name ?? 'v');
+    case 'norm':
+      return atom(`|${list(e.args, write)}|`);
+    case 'dot':
+    case 'cross':
+      return atom(`(${e.args.map(inner).join(e.operation === 'dot' ? ' \\cdot ' : ' \\times ')})`);
+    case 'ordered':
+      return { text: e.args.map(inner).join('*'), binding: Binding.Product };
+    case 'commutator':
+      return atom(`[${list(e.args, write)}]`);
+    case 'anticommutator':
+      return atom(`\\{${list(e.args, write)}\\}`);
+    case 'trace':
+    case 'determinant':
+      return atom(`${e.operation === 'trace' ? 'tr' : 'det'}(${list(e.args, write)})`);
+    case 'directional':
+      return atom(`${e.args.slice(1).map((a) => `(${inner(a)} \\cdot \\nabla)`).join('')}${list(e.args.slice(0, 1), write)}`);
+    case 'tuple':
+      return atom(`(${list(e.args, write)})`);
+  }
+}
 
 /** Greek by its word, subscripts without braces. */
 function plainSymbol(name: string): string {

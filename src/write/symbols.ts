@@ -20,6 +20,7 @@ export function latexSymbol(name: string): string {
 /** One-line Unicode: `\epsilon` -> ϵ, `v_0` -> v₀, `k_B` stays. */
 export function unicodeSymbol(name: string): string {
   const plain = name
+    .replace(/\^(?:\\dagger|\{\\dagger\})/g, '†')
     .replace(/\\(?:mathrm|mathbf|boldsymbol|bm|pmb|mathit|text|operatorname|bar|tilde|vec|dot)\s*\{([^{}]*)\}/g, '$1')
     .replace(/\\(?:wide)?hat\s*\{([^{}]*)\}/g, '$1\u0302')
     .replace(/\\([A-Za-z]+)\s*/g, (whole, word: string) => GREEK[word] ?? word)

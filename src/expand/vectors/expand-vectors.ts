@@ -17,6 +17,18 @@ interface Mover {
 const VECTOR_OPERATIONS = new Set(['symbol', 'norm', 'dot', 'cross', 'tuple', 'directional']);
 export const hasVectors = (e: Expression): boolean => [...walk(e)].some((n) => n.kind === 'vector' && VECTOR_OPERATIONS.has(n.operation));
 
+/** Whether the formula makes sense with its bold letters as vectors; a matrix in it does not. */
+export function isVectorFormula(f: Expression): boolean {
+  if ([...walk(f)].some((n) => n.kind === 'vector' && !VECTOR_OPERATIONS.has(n.operation))) return false;
+  try {
+    lower(open(f, [], []), f);
+    return true;
+  } catch (error) {
+    if (error instanceof Declined) return false;
+    throw error;
+  }
+}
+
 /** The vector that a variable names: `\mathbf{d}`, `|\mathbf{d}|`, `d` where d is no symbol of its own, `d/r`. Null for a scalar. */
 export function vectorNamed(variable: Expression, f: Expression): Expression | null {
   switch (variable.kind) {

@@ -1,2 +1,2 @@
 /** The door of vectors/: formulas with bold letters, expanded through lengths and dot products. */
-export { expandSmallVectors, expandVectors, hasVectors } from './expand-vectors.ts';
+export { expandSmallVectors, expandVectors, hasVectors, isVectorFormula } from './expand-vectors.ts';

@@ -3,6 +3,7 @@ import { build, type Expression } from '../../expression/index.ts';
 import { bars, bracket, cases, fenced, group } from './brackets.ts';
 import { bracketArguments, applyKnown, ofMatrix, opensBracket } from './calls.ts';
 import { derivative, indexed, integral, limit, shortDerivative } from './calculus.ts';
+import { evaluated } from './evaluation.ts';
 import { isName } from './facts.ts';
 import { commandName, wordName } from './functionNames.ts';
 import { numberOf, relationOf } from './grammar.ts';
@@ -90,7 +91,7 @@ export function atom(p: State): Expression {
       if (t.text === '|' || t.text === 'l|') return bars(p);
       if (t.text === 'begin{cases}') return cases(p);
       if (t.text === 'begin{table}') fail(p, 'Matrices and tables are not read as one quantity; select one entry.');
-      if (t.text === 'left.') fail(p, 'A bar with a place of evaluation is not read yet; write the value itself.');
+      if (t.text === 'left.') return evaluated(p);
       break;
     case 'command':
       return command(p);

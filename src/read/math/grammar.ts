@@ -1,5 +1,6 @@
 /** Relations, sums, products, quotients, powers: one rule a level of precedence. Widths are loops; depth is counted and capped. */
 import { build, type Expression, Q, type Relation, type Span } from '../../expression/index.ts';
+import { atPlace } from './evaluation.ts';
 import { isName, nameText } from './facts.ts';
 import { deeper, fail, isCommand, isMark, named, next, node, peek, type State } from './state.ts';
 import { MAX_DEPTH, type Token, TOO_DEEP } from './tokens.ts';
@@ -292,6 +293,9 @@ export function factor(p: State): Expression {
         const twice = isMark(peek(p), '!');
         if (twice) next(p);
         value = node(p, from, { kind: 'call', function: twice ? 'doubleFactorial' : 'factorial', args: [value], written: twice ? '!!' : '!' });
+      } else if (isMark(t, '|') && isMark(peek(p, 1), '_') && p.bars === 0) {
+        next(p);
+        value = atPlace(p, from, value);
       } else if (isMark(t, '_') && isMark(p.tokens[p.at - 1], ')')) {
         next(p);
         const index = p.grammar.texArgument(p);

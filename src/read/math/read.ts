@@ -8,6 +8,7 @@ import { factor, factorRun, isCondition, relation, sum, term } from './grammar.t
 import { lex } from './lexer.ts';
 import { type MacroTable, NO_MACROS } from './macros.ts';
 import { withIndexDerivatives } from './indexDerivatives.ts';
+import { withoutSystemBraces } from './systems.ts';
 import { fail, type Grammar, isCommand, isMark, named, next, peek, type State } from './state.ts';
 import { MAX_DEPTH, type Token, TOO_DEEP, Unreadable } from './tokens.ts';
 
@@ -87,7 +88,7 @@ function stateOf(text: string, notation: 'latex' | 'plain', options: ReadOptions
   const from = options.start ?? 0;
   const to = options.end ?? text.length;
   if (to - from > MAX_LENGTH) throw new Unreadable('This text is too long to be one formula; select a smaller piece.', { start: from, end: to });
-  const tokens = lex(text, { notation, macros: options.macros ?? NO_MACROS, from, to, joinRows: options.joinRows ?? false });
+  const tokens = withoutSystemBraces(lex(text, { notation, macros: options.macros ?? NO_MACROS, from, to, joinRows: options.joinRows ?? false }));
   const match = pair(tokens);
   const facts = factsAround(text, notation, options) ?? gatherFacts(tokens, match);
   const symbols = new Set(options.symbols ?? []);

@@ -1,0 +1,41 @@
+/** Which letters of a formula do not commute: those declared so, and those whose notation says it. */
+import { type Assumption, type Expression, walk } from '../../expression/index.ts';
+
+/** Spellings of the identity. A bold 1 is read as the number. */
+const IDENTITY = /^(?:I|\\(?:mathbb|mathbf|hat|bm|boldsymbol|mathrm)\{(?:I|1)\})$/;
+const HATTED_CAPITAL = /^\\(?:wide)?hat\{[A-Z]/;
+const CAPITAL = /^(?:\\(?:mathbf|boldsymbol|bm|hat|widehat|mathcal)\{)?[A-Z]/;
+
+export interface Letters {
+  /** Nodes by canonical name, in order of appearance. */
+  readonly operators: ReadonlyMap<string, Expression>;
+  /** The letter that stands for the identity, where the formula has one. */
+  readonly identity: Expression | null;
+}
+
+export const letterName = (e: Expression): string | null => (e.kind === 'symbol' ? e.name : e.kind === 'vector' && e.operation === 'symbol' ? (e.name ?? null) : null);
+const OPERATIONS = new Set(['commutator', 'anticommutator', 'trace', 'determinant', 'ordered']);
+
+/**
+ * Null where nothing speaks of operators. One letter under a hat alone commutes with itself: its formula is left to the commuting rules.
+ * Bold capitals are operators here; whoever calls has ruled out that they are vectors.
+ */
+export function lettersOf(f: Expression, assumptions: readonly Assumption[]): Letters | null {
+  const declared = new Set(assumptions.flatMap((a) => (a.kind === 'domain' && a.domain === 'operator' ? [a.symbol] : [])));
+  const operators = new Map<string, Expression>();
+  let identity: Expression | null = null;
+  const special = [...walk(f)].filter((n) => n.kind === 'vector' && OPERATIONS.has(n.operation));
+  const inside = new Set(special.flatMap((n) => [...walk(n)].map(letterName)));
+  const bracketed = new Set(special.flatMap((n) => (n.kind === 'vector' && /commutator$/.test(n.operation) ? n.args.map(letterName) : [])));
+  let bold = false;
+  for (const n of walk(f)) {
+    const name = letterName(n);
+    if (name === null) continue;
+    const isBold = n.kind === 'vector' && CAPITAL.test(name);
+    if (isBold) bold = true;
+    if (!declared.has(name) && IDENTITY.test(name)) identity = n;
+    else if (declared.has(name) || HATTED_CAPITAL.test(name) || bracketed.has(name) || isBold || (inside.has(name) && CAPITAL.test(name))) operators.set(name, n);
+  }
+  const speaks = [...operators.keys()].some((name) => declared.has(name)) || special.length > 0 || bold || operators.size > 1;
+  return speaks && operators.size > 0 ? { operators, identity } : null;
+}

@@ -6,6 +6,8 @@ import { callOf, cubeOf, exponentOf, isOne, type Normal, ONE, radicandOf, same, 
 export interface Rewritten {
   readonly tree: Expression;
   readonly identity: string;
+  /** True for identities of real numbers that hold wherever both sides are real, and that the normal form of the difference may not know. */
+  readonly everywhere?: true;
 }
 export type Difference = (a: Expression, b: Expression, normal: Normal) => Rewritten | null;
 

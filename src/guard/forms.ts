@@ -14,6 +14,8 @@ export interface ExactForm {
   /** In words, the identities that made it; empty for the expression itself. */
   readonly identities: readonly string[];
   readonly cost: number;
+  /** Equal to the expression by its identities alone, wherever it is real. */
+  readonly certain: boolean;
 }
 
 const MOST_TREES = 90;
@@ -26,9 +28,10 @@ function* neighbours(e: Expression, normal: Normal): Generator<Rewritten> {
   for (let k = 0; k < parts.length; k += 1) {
     const part = parts[k];
     if (!part || rationalOf(part)) continue;
-    for (const { tree, identity } of neighbours(part, normal)) {
+    for (const { tree, identity, everywhere } of neighbours(part, normal)) {
       let at = -1;
       yield {
+        ...(everywhere ? { everywhere } : {}),
         tree: mapChildren(e, (child) => {
           at += 1;
           return at === k ? tree : child;
@@ -55,22 +58,22 @@ export function exactForms(f: Expression, assumptions: readonly Assumption[], ro
   const original = withoutMissingCalls(f, row);
   const seen = new Set([structureKey(original)]);
   const found: ExactForm[] = [];
-  let frontier: ExactForm[] = [{ tree: original, identities: [], cost: costOf(original) }];
+  let frontier: ExactForm[] = [{ tree: original, identities: [], cost: costOf(original), certain: true }];
   for (let depth = 0; depth < DEEPEST && frontier.length > 0 && seen.size < MOST_TREES; depth += 1) {
     const next: ExactForm[] = [];
     for (const form of frontier) {
-      for (const { tree, identity } of neighbours(form.tree, normal)) {
+      for (const { tree, identity, everywhere } of neighbours(form.tree, normal)) {
         budget.check();
         const key = structureKey(tree);
         if (seen.has(key) || seen.size >= MOST_TREES) continue;
         seen.add(key);
         if (costOf(tree) > 3 * costOf(original) + 20) continue;
-        next.push({ tree, identities: form.identities.includes(identity) ? form.identities : [...form.identities, identity], cost: costOf(tree) });
+        next.push({ tree, identities: form.identities.includes(identity) ? form.identities : [...form.identities, identity], cost: costOf(tree), certain: form.certain && everywhere === true });
       }
     }
     found.push(...next);
     frontier = next;
   }
-  const proved = found.filter((form) => writable(form.tree, row) && normal.equal(original, form.tree));
-  return [{ tree: original, identities: [], cost: costOf(original) }, ...proved.sort((a, b) => a.cost - b.cost)];
+  const proved = found.filter((form) => writable(form.tree, row) && (form.certain || normal.equal(original, form.tree)));
+  return [{ tree: original, identities: [], cost: costOf(original), certain: true }, ...proved.sort((a, b) => a.cost - b.cost)];
 }

@@ -235,11 +235,14 @@ export class ExactOrders {
   }
 }
 
+/** Functions that end in a square root at their branch points. */
+const SQUARE_ROOT_BRANCH: ReadonlySet<string> = new Set(['sqrt', 'asin', 'acos', 'acosh']);
+
 /** The least common denominator of the powers in a tree. */
 export function powerDenominator(e: Expression): number {
   let q = 1n;
   for (const node of walk(e)) {
-    const den = node.kind === 'power' && node.exponent.kind === 'number' ? node.exponent.value.den : node.kind === 'root' && node.degree.kind === 'number' ? node.degree.value.num : node.kind === 'call' && node.function === 'sqrt' ? 2n : 1n;
+    const den = node.kind === 'power' && node.exponent.kind === 'number' ? node.exponent.value.den : node.kind === 'root' && node.degree.kind === 'number' ? node.degree.value.num : node.kind === 'call' && SQUARE_ROOT_BRANCH.has(node.function) ? 2n : 1n;
     if (den > 1n) q = (q * den) / Q.gcd(q, den);
   }
   return q > 12n ? 1 : Number(q);

@@ -77,6 +77,16 @@ export class Scanner {
     return value !== null && Number.isFinite(value) ? value : null;
   }
 
+  /** The least positive distance of a float from the point, as part of the reach: floats are multiples of the smallest subnormal number. 0 where the point is none of them. */
+  #closest({ point, reach }: { readonly point: Rational; readonly reach: Rational }): number {
+    const { emin, precision } = this.machine.format;
+    const step = powerOfTwo(emin - precision + 1);
+    if (Q.divide(point, step).den !== 1n) return 0;
+    const part = Q.toDouble(Q.divide(step, reach));
+    // Doubles below the smallest normal number are coarse.
+    return part >= 2 ** -1022 ? part * (1 - 2 ** -50) : Math.max(0, part - 2 ** -1074);
+  }
+
   /** Where the value vanishes at the point, only distances at which it can be a normal number are promised anything. */
   #normalPart(form: Expression, piece: Piece, models: PieceModels, denominator: number): PieceModels {
     if (piece.kind === 'plain' || (piece.kind === 'near' && piece.least > 0)) return models;
@@ -86,7 +96,8 @@ export class Scanner {
     if (!(most > 0 && most < Infinity)) return models;
     const { emin, precision } = this.machine.format;
     const s = (2 ** emin * (precision < 20 ? 0.5 : 1 - 2 ** -10) / most) ** (1 / model.valuation) * (1 - 2 ** -30);
-    const least = s ** denominator * (1 - 2 ** -30);
+    const own = s ** denominator * (1 - 2 ** -30);
+    const least = piece.kind === 'near' ? Math.max(own, this.#closest(piece)) : own;
     if (piece.kind === 'infinite') {
       if (!(least > 0 && least < 1)) return models;
       const farthest = Q.divide(piece.reach, Q.fromDouble(least));

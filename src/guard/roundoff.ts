@@ -179,23 +179,25 @@ export class Roundoff {
   #product(factors: readonly Expression[]): Computed | null {
     const [first, ...rest] = factors;
     let total = first ? this.of(first) : null;
-    let scaling = first ? powerFactor(first) : false;
+    let scaling: Scaling = first ? scalingBy(first) : 'other';
     for (const factor of rest) {
       const value = this.of(factor);
       if (!total || !value) return null;
-      total = this.#times(total, value, scaling || powerFactor(factor));
-      scaling = false;
+      total = this.#times(total, value, scaling === 'other' ? scalingBy(factor) : scaling);
+      scaling = 'other';
     }
     return total;
   }
 
-  #times(a: Computed, b: Computed, byPowerOfTwo: boolean): Computed | null {
+  #times(a: Computed, b: Computed, byPowerOfTwo: Scaling): Computed | null {
     const { models } = this;
     const model = models.m.multiply(a.model, b.model);
     const [x, y] = [models.size(a.model), models.size(b.model)];
     const tiny = plus(plus(times(times(a.tiny, y.most), 1 + b.relative), times(times(b.tiny, x.most), 1 + a.relative)), times(a.tiny, b.tiny));
     const absolute = plus(plus(times(a.absolute, y.most), times(b.absolute, x.most)), times(a.absolute, b.absolute));
-    return this.#rounded(model, compound(a.relative, b.relative), tiny, absolute, byPowerOfTwo ? 0 : this.#unit);
+    const rounded = this.#rounded(model, compound(a.relative, b.relative), tiny, absolute, byPowerOfTwo === 'other' ? this.#unit : 0);
+    // Unless it overflows, a multiple by 1, 2, 4, ... is a float, subnormal or not.
+    return rounded && byPowerOfTwo === 'whole' ? { model, relative: compound(a.relative, b.relative), tiny, absolute } : rounded;
   }
 
   #quotient(a: Computed, b: Computed, byPowerOfTwo: boolean): Computed | null {
@@ -228,7 +230,7 @@ export class Roundoff {
     const n = Number(q.num < 0n ? -q.num : q.num);
     if (n > MOST_PRODUCTS) return null;
     let product: Computed | null = a;
-    for (let k = 1; k < n && product; k += 1) product = this.#times(product, a, false);
+    for (let k = 1; k < n && product; k += 1) product = this.#times(product, a, 'other');
     if (!product) return null;
     // A language may hand the power to its library instead.
     const viaLibrary = n > 2 ? this.#rounded(product.model, inverseRise(solid.relative, n), product.tiny, Infinity, this.#libraryUnits()) : null;
@@ -313,7 +315,9 @@ function exponentOf(x: number): number {
   return e;
 }
 const isPowerOfTwo = (q: Q.Rational): boolean => !Q.isZero(q) && Q.equal(Q.absolute(q), powerOfTwo(binaryExponent(q)));
-const powerFactor = (e: Expression): boolean => {
+/** What a constant factor does to the digits: nothing (1, 2, 4, ...), only underflow (1/2, ...), or rounding. */
+type Scaling = 'whole' | 'part' | 'other';
+const scalingBy = (e: Expression): Scaling => {
   const q = rationalOf(e);
-  return q !== null && isPowerOfTwo(q);
+  return q === null || !isPowerOfTwo(q) ? 'other' : q.den === 1n ? 'whole' : 'part';
 };

@@ -90,9 +90,14 @@ function callRewrites(id: string, args: readonly Expression[], normal: Normal): 
     }
     case 'acos':
       return [
-        { tree: product(build.number(2), call('asin', build.squareRoot(quotient(normal.tidy(difference(ONE, u)), build.number(2))))), identity: 'acos(u) = 2 asin(sqrt((1 - u)/2))' },
+        // Doubling is exact where halving would lose the digits of the smallest arguments.
+        { tree: product(build.number(2), call('asin', quotient(build.squareRoot(normal.tidy(product(build.number(2), difference(ONE, u)))), build.number(2)))), identity: 'acos(u) = 2 asin(sqrt(2 (1 - u))/2)', everywhere: true },
         { tree: call('atan2', build.squareRoot(product(difference(ONE, u), sum(ONE, u))), u), identity: 'acos(u) = atan2(sqrt((1 - u)(1 + u)), u)' },
       ];
+    case 'acosh': {
+      const above = normal.tidy(difference(u, ONE));
+      return [{ tree: call('log1p', sum(above, product(build.squareRoot(above), build.squareRoot(sum(above, build.number(2)))))), identity: 'acosh(1 + u) = log1p(u + sqrt(u) sqrt(u + 2))', everywhere: true }];
+    }
     case 'asin':
       return [{ tree: call('atan2', u, build.squareRoot(product(difference(ONE, u), sum(ONE, u)))), identity: 'asin(u) = atan2(u, sqrt((1 - u)(1 + u)))' }];
     case 'sqrt':

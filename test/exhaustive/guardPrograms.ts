@@ -33,6 +33,8 @@ export const GUARDS: readonly GuardCase[] = [
   { text: 'sqrt(x+1) - sqrt(x)', interval: ['0', 'inf'], reference: '1/(sqrt(x + 1) + sqrt(x))' },
   { text: '1 - sqrt(1 - x)', interval: ['-1', '1/2'], reference: 'x/(1 + sqrt(1 - x))' },
   { text: 'log(x)/(x - 1)', point: '1', interval: ['1/2', '2'], reference: 'x == 1 ? 1 : log1p(x - 1)/(x - 1)' },
+  { text: 'acos(1 - x)', interval: ['0', '1'], reference: '2*asin(sqrt(x/2))' },
+  { text: 'acosh(1 + x)', interval: ['0', '4'], reference: 'log1p(x + sqrt(x)*sqrt(x + 2))' },
 ];
 
 export function guardOf(c: GuardCase, format = 'binary32', language = 'c'): Guarded {

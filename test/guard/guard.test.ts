@@ -15,7 +15,7 @@ const gcc = has('gcc');
 if (!gcc) console.warn('gcc is absent: emitted C is not run');
 
 describe('emitted guards over floats of the whole interval (every 400 009th; test/exhaustive/guards.ts runs all)', () => {
-  it.skipIf(!gcc).each(GUARDS.filter((_, k) => [0, 1, 4, 5, 7, 9, 11].includes(k)))('$text', (c) => {
+  it.skipIf(!gcc).each(GUARDS.filter((_, k) => [0, 1, 4, 5, 7, 9, 11, 12, 13].includes(k)))('$text', (c) => {
     const found = guardOf(c);
     const { worst, floats } = overFloats(guardRunOf(c, found), 400_009, hasFma());
     expect(floats).toBeGreaterThan(30);
@@ -42,8 +42,14 @@ describe('exact forms (identities of DLMF 4.21, 4.35; conjugates)', () => {
     ['cbrt(1 + x) - 1', 'cbrt(1 + x)'],
     ['cosh(x) - 1', 'sinh(x/2)^2'],
     ['pow(1 + x, 0.3) - 1', 'log1p(x)'],
+    ['acos(1 - x)', '2*asin(sqrt(2*x)/2)'],
+    ['acosh(1 + x)', 'log1p(x + sqrt(x)*sqrt(x + 2))'],
   ])('%s', async (text, part) => {
     expect(await formsOf(text)).toContain(part);
+  });
+  it('acos at its branch point 1 is as good as the library', async () => {
+    const found = await answer({ text: 'acos(x)', language: 'c', point: '1', interval: ['1/2', '1'] });
+    expect(Number(found.bound.whole)).toBeLessThan(4 * 2 ** -53);
   });
   it('sqrt(x+1) - sqrt(x) without end, by its conjugate', async () => {
     const found = await answer({ text: 'sqrt(x+1)-sqrt(x)', language: 'c', interval: ['0', 'inf'] });

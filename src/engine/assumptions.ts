@@ -1,5 +1,5 @@
 /** Assumptions as the readers find them, as the field of coefficients takes them. */
-import { type Assumption, build, type Expression } from '../expression/index.ts';
+import { type Assumption, build, type Expression, walk } from '../expression/index.ts';
 import { failure, type Outcome, success } from '../outcome.ts';
 import { readAssumption, type Property } from '../read/index.ts';
 
@@ -30,18 +30,27 @@ function meaning(subject: Expression, property: Property): readonly Assumption[]
     case 'noninteger':
       return domain('real');
     case 'operator':
-      return subject.kind === 'symbol' || subject.kind === 'vector' ? [{ kind: 'domain', symbol: subject.name ?? '', domain: 'operator' }] : [];
+      return subject.kind === 'symbol' || (subject.kind === 'vector' && subject.operation === 'symbol') ? [{ kind: 'domain', symbol: subject.name ?? '', domain: 'operator' }] : [];
     case 'complex':
       return domain('complex');
   }
 }
+
+const isCommutator = (e: Expression): boolean => e.kind === 'vector' && /commutator$/.test(e.operation);
 
 export function readAllAssumptions(texts: readonly string[] | undefined): Outcome<readonly Assumption[]> {
   const all: Assumption[] = [];
   for (const text of texts ?? []) {
     const read = readAssumption(text);
     if (!read.ok) return failure('bad-request', `The assumption "${text}" cannot be read: ${read.error.message}`);
-    for (const a of read.value) all.push(...(a.kind === 'property' ? meaning(a.subject, a.property) : [a]));
+    for (const a of read.value) {
+      if (a.kind === 'property') all.push(...meaning(a.subject, a.property));
+      else if (isCommutator(a.left) || isCommutator(a.right)) {
+        const zero = a.relation === '!=' && a.right.kind === 'number';
+        if (!zero) return failure('bad-request', `The commutation relation "${text}" is not used in expansions; say only that the letters do not commute.`);
+        all.push(...[...walk(a.left)].flatMap((e) => meaning(e, 'operator')));
+      } else all.push(a);
+    }
   }
   return success(all);
 }

@@ -26,6 +26,8 @@ describe('as authors write them', () => {
     [String.raw`\frac{1}{|\mathbf r - \mathbf r'|}`, String.raw`\mathbf r'`, 3, String.raw`\frac{1}{r} + \frac{\mathbf{r} \cdot \mathbf{r}'}{r^3} + \frac{3(\mathbf{r} \cdot \mathbf{r}')^2 - r^2{r'}^2}{2r^5} + O({r'}^3)`],
     [String.raw`\frac{1}{\lvert\vec r - \vec r'\rvert}`, String.raw`\vec r`, 2, String.raw`\frac{1}{r} + \frac{\vec{r} \cdot \vec{r}'}{r^3} + O(r^{-3})`, 'inf'],
     [String.raw`\frac{1}{\left\|\boldsymbol{r} - \boldsymbol{d}\right\|}`, String.raw`\boldsymbol{d}`, 2, String.raw`\frac{1}{r} + \frac{\boldsymbol{r} \cdot \boldsymbol{d}}{r^3} + O(d^2)`],
+    // A plain letter beside its bold one is its length, also without bars.
+    [String.raw`\frac{1}{\sqrt{r^2 + r'^2 - 2{\bf r}\cdot{\bf r}'}}`, String.raw`{\bf r}'`, 3, String.raw`\frac{1}{r} + \frac{\mathbf{r} \cdot \mathbf{r}'}{r^3} + \frac{3(\mathbf{r} \cdot \mathbf{r}')^2 - r^2{r'}^2}{2r^5} + O({r'}^3)`],
     // The field of a displaced charge and its dipole term: common practice.
     [String.raw`\frac{\mathbf r - \mathbf d}{|\mathbf r - \mathbf d|^3}`, String.raw`\mathbf d`, 2, String.raw`\frac{\mathbf{r}}{r^3} + \frac{3(\mathbf{r} \cdot \mathbf{d}) \mathbf{r} - r^2 \mathbf{d}}{r^5} + O(d^2)`],
     // Taylor's formula along a direction: common practice.

@@ -76,6 +76,9 @@ function open(f: Expression, movers: readonly Mover[], moving: readonly string[]
   const weightOf = (name: string): Rational => weights.get(letterKey(name)) ?? Q.ZERO;
   // Letters first, so that \hat{r} before \mathbf{r} still means its direction.
   for (const n of walk(f)) if (n.kind === 'vector' && n.operation === 'symbol' && !/^\\(?:wide)?hat\{/.test(n.name ?? '')) frame.enter(n.name ?? '', weightOf(n.name ?? ''), false);
+  // r beside \mathbf{r} is its length, also where no bars say so.
+  const scalars = new Set(freeSymbols(f));
+  frame.lengthsAmong(scalars);
   return { frame, weightOf, moving, directions: [], fields: new Map() };
 }
 

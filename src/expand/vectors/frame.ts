@@ -54,6 +54,11 @@ export class Frame {
     return this.#symbol(letter.length, plain, letter.weight);
   }
 
+  /** Enters the lengths that stand among the names as plain letters. */
+  lengthsAmong(names: ReadonlySet<string>): void {
+    this.#letters.forEach((letter, i) => letter.length !== null && names.has(letter.length) && this.length(i));
+  }
+
   weightOf = (key: BasisKey): Rational => indices(key).reduce((sum, i) => Q.add(sum, this.#letter(i).weight), Q.ZERO);
 
   /** The letter or cross product itself, as a symbol: vectors that a result is a combination of. */

@@ -124,8 +124,10 @@ export function lex(text: string, options: LexOptions): Token[] {
         if (given) lexSource(given);
         i += 2;
       } else if (c === '{' && body.charAt(i + 1) === '\\') {
-        const name = fontSwitch(i);
-        if (name) push('word', name[1] ?? '', i, i + name[0].length, { upright: true });
+        const bold = /^\{\\bf\s+([A-Za-z])\s*\}/.exec(body.slice(i, Math.min(source.to, i + 40)));
+        const name = bold ?? fontSwitch(i);
+        if (bold) boldLetter(bold, i);
+        else if (name) push('word', name[1] ?? '', i, i + name[0].length, { upright: true });
         else push('open', c, i, i + 1);
         i += name?.[0].length ?? 1;
       } else if (c === '{' || c === '}') {
@@ -146,6 +148,15 @@ export function lex(text: string, options: LexOptions): Token[] {
       } else {
         i = character(i);
       }
+    }
+
+    /** `{\bf r}` as `\mathbf{r}`. */
+    function boldLetter(found: RegExpExecArray, at: number): void {
+      const end = at + found[0].length;
+      push('command', 'mathbf', at, end);
+      push('open', '{', at, end);
+      push('letter', found[1] ?? '', at, end);
+      push('close', '}', at, end);
     }
 
     /** `{\rm d}`, `{\cal O}`: an old font switch around one name. */

@@ -206,10 +206,11 @@ async function useLibraryFunction(room: Room, target: Target): Promise<unknown> 
 }
 
 async function writeTestHarness(room: Room, target: Target): Promise<unknown> {
-  const { document } = target;
   const consultation = await consult(room, target);
-  const content = testHarness(document.getText().slice((consultation.place ?? target.place).start, (consultation.place ?? target.place).end), consultation);
-  if (content === null) return say(consultation.answer.ok ? vscode.l10n.t('A test harness needs an expression with one variable and rational coefficients.') : consultation.answer.error.message);
+  const reading = consultation.answer.ok ? consultation.answer.reading : undefined;
+  const translation = reading ? await room.services.client.consult({ desk: 'translation', latex: reading.latex, language: 'c' }) : null;
+  const content = testHarness(translation && 'code' in translation ? translation.code : null, consultation);
+  if (content === null) return say(consultation.answer.ok ? vscode.l10n.t('A test harness needs one variable, rational coefficients and an interval with decimal ends.') : consultation.answer.error.message);
   const opened = await vscode.workspace.openTextDocument({ language: 'c', content });
   return vscode.window.showTextDocument(opened, vscode.ViewColumn.Beside);
 }

@@ -2,32 +2,33 @@
 import type { Consultation } from './consultant.ts';
 
 const RATIONAL = /^-?\d+(\/\d+)?$/;
-/** `numeric.sum` uses the names of mpmath, which for these functions are those of C as well. */
-const C_NAMES = new Set(['sqrt', 'exp', 'log', 'sin', 'cos', 'tan', 'asin', 'acos', 'atan', 'sinh', 'cosh', 'tanh', 'asinh', 'acosh', 'atanh']);
+/** Functions of the C standard's <math.h>, which have a variant for long double. */
+const CALL = /\b(a?(?:sin|cos|tan)h?|exp|exp2|expm1|log|log2|log10|log1p|sqrt|cbrt|pow|hypot|fabs|fma|fmin|fmax|atan2|erf|erfc|tgamma|lgamma)\s*\(/g;
 
-export function testHarness(text: string, { answer, asked, language }: Consultation): string | null {
-  if (!answer.ok || answer.prefactor !== undefined || !answer.reading) return null;
-  if (language !== 'c' && language !== 'cpp') return null;
+/** `code` is the function in C, of one variable; null where there is none. Works for an expression of any language, whose function is the same. */
+export function testHarness(code: string | null, { answer, asked }: Consultation): string | null {
+  if (code === null || !answer.ok || answer.prefactor !== undefined || !answer.reading) return null;
   if (!answer.terms.every((term) => RATIONAL.test(term.coefficient) && /^-?\d+$/.test(term.power) && term.log === 0 && term.scale === undefined)) return null;
   if (answer.reading.point !== '0' && answer.reading.pointLatex !== '0') return null;
-  const variable = answer.reading.variable;
-  if (!/^[A-Za-z_]\w*$/.test(variable) || C_NAMES.has(variable)) return null;
-  const [from, to] = asked.interval ?? ['-0.5', '0.5'];
-  const decimal = (end: string): string => (/^-?[\d.]+(e-?\d+)?$/i.test(end) ? end : /^-?\d+\/\d+$/.test(end) ? end.replace('/', '.0/') : '0.5');
-  const terms = answer.terms.map((term) => `(${term.coefficient.replace('/', '.0L/')}${term.coefficient.includes('/') ? '.0L' : '.0L'}) * powl(v, ${term.power})`);
+  const variable = onlyVariable(code);
+  if (variable === null) return null;
+  const interval = asked.interval ?? ['-0.5', '0.5'];
+  const [from, to] = interval.map(literal);
+  if (!from || !to) return null;
+  const terms = answer.terms.map((term) => `(${term.coefficient.replace('/', '.0L/')}.0L) * powl(v, ${term.power})`);
   return `/* Largest error of the truncated expansion
  *   ${answer.text}
- * over every float of [${from}, ${to}], against long double. Build and run:
+ * over every float of [${interval.join(', ')}], against long double. Build and run:
  *   cc -O2 harness.c -lm && ./a.out
  */
 #include <math.h>
 #include <stdio.h>
 
-static long double reference(long double ${variable}) { return ${text.replace(/\b(sqrt|exp|log|sin|cos|tan|asin|acos|atan|sinh|cosh|tanh|asinh|acosh|atanh|pow|expm1|log1p|cbrt|erf)\s*\(/g, '$1l(').replace(/(\d\.?\d*)f\b/g, '$1')}; }
+static long double reference(long double ${variable}) { return ${code.replace(CALL, '$1l(').replace(/(?<![\w.])((?:\d+\.\d*|\.\d+)(?:e[-+]?\d+)?)f?\b/gi, '$1L')}; }
 static long double sum(long double v) { return ${terms.join('\n    + ') || '0.0L'}; }
 
 int main(void) {
-  const float from = (float)(${decimal(from)}), to = (float)(${decimal(to)});
+  const float from = (float)(${from}), to = (float)(${to});
   long double worst = 0;
   float where = from;
   for (float v = from; v <= to; v = nextafterf(v, INFINITY)) {
@@ -38,4 +39,14 @@ int main(void) {
   return 0;
 }
 `;
+}
+
+/** An end of the interval as C says it; null for what is neither a decimal nor a ratio of integers. */
+const literal = (end: string): string | null => (/^-?\d+$/.test(end) ? `${end}.0` : /^-?(?:\d+\.\d*|\.\d+|\d+(?=e))(?:e-?\d+)?$/i.test(end) ? end : /^-?\d+\/\d+$/.test(end) ? `${end.replace('/', '.0/')}.0` : null);
+
+/** The one name in the code that is no call and no constant. */
+function onlyVariable(code: string): string | null {
+  const names = new Set([...code.matchAll(/[A-Za-z_]\w*(?!\w*\s*\()/g)].map(([name]) => name).filter((name) => !/^(?:M_[A-Z0-9_]+|e\d*|L)$/.test(name)));
+  const [name, ...more] = names;
+  return name !== undefined && more.length === 0 ? name : null;
 }

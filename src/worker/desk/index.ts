@@ -4,6 +4,7 @@ import { consult } from './consult.ts';
 import { noteReadings } from './notes.ts';
 import { createPictureMaker } from './picture/index.ts';
 import { forms } from './proposals/forms.ts';
+import { translated } from './proposals/translation.ts';
 import { replacement } from './proposals/helper.ts';
 import { proposals } from './proposals/index.ts';
 import type { DeskAnswer, DeskRequest } from './types.ts';
@@ -27,6 +28,8 @@ export function createDesk(room: { readonly engine: Engine; readonly loadFile: (
         return { proposals: forms(request) };
       case 'picture':
         return pictures.picture(request);
+      case 'translation':
+        return { code: translated(request) };
       case 'notes':
         return { notes: noteReadings(request.text, request.language) };
     }

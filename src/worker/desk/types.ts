@@ -106,6 +106,17 @@ export interface FormsRequest {
   readonly format?: string;
 }
 
+/** A formula in a programming language. */
+export interface TranslationRequest {
+  readonly desk: 'translation';
+  readonly latex: string;
+  readonly language: string;
+}
+export interface TranslationAnswer {
+  /** Null where the language cannot say it. */
+  readonly code: string | null;
+}
+
 /** A formula as a picture that a Markdown image can show. `ink` is a CSS colour. */
 export interface PictureRequest {
   readonly desk: 'picture';
@@ -141,14 +152,16 @@ export interface NotesAnswer {
   readonly notes: readonly NoteReading[];
 }
 
-export type DeskRequest = ConsultRequest | ProposalsRequest | ReplacementRequest | FormsRequest | PictureRequest | NotesRequest;
+export type DeskRequest = ConsultRequest | ProposalsRequest | ReplacementRequest | FormsRequest | PictureRequest | NotesRequest | TranslationRequest;
 export type DeskAnswerTo<R extends DeskRequest> = R extends ConsultRequest
   ? ConsultAnswer
   : R extends ProposalsRequest | ReplacementRequest | FormsRequest
     ? ProposalsAnswer
     : R extends PictureRequest
       ? PictureAnswer
-      : NotesAnswer;
+      : R extends TranslationRequest
+        ? TranslationAnswer
+        : NotesAnswer;
 /** A defect or a cancelled request comes back as the protocol's failure. */
-export type DeskAnswer = ConsultAnswer | ProposalsAnswer | PictureAnswer | NotesAnswer | ErrorAnswer;
+export type DeskAnswer = ConsultAnswer | ProposalsAnswer | PictureAnswer | NotesAnswer | TranslationAnswer | ErrorAnswer;
 export type { Answer, CheckAnswer, ErrorAnswer, ExpandAnswer, FitAnswer, GuardAnswer };

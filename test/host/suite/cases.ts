@@ -1,3 +1,4 @@
+/* eslint-disable no-console -- the suite reports through the console of its host */
 /** What the extension must do in every host. Results come from the engine; the values are textbook expansions. */
 import * as vscode from 'vscode';
 import type { Api } from '../../../src/editor/activate.ts';
@@ -299,6 +300,35 @@ export const cases: Readonly<Record<string, () => Promise<void>>> = {
     await vscode.commands.executeCommand('leadingOrder.testHarness');
     const harness = await until('the program', () => vscode.window.visibleTextEditors.find((e) => e.document.getText().includes('nextafterf')));
     check(/sinl\(x\)/.test(harness.document.getText()) && harness.document.getText().includes('-0.25'), harness.document.getText());
+  },
+
+  'macros of an included file are known to the check': async () => {
+    const folder = vscode.workspace.workspaceFolders?.[0]?.uri;
+    check(folder, 'no folder is open');
+    const [macros, main] = ['macros-of-the-test.tex', 'uses-macros.tex'].map((name) => vscode.Uri.joinPath(folder, name));
+    check(macros && main, 'no names');
+    const write = (uri: vscode.Uri, text: string): Thenable<void> => vscode.workspace.fs.writeFile(uri, new TextEncoder().encode(text));
+    try {
+      await write(macros, '\\newcommand{\\swing}[1]{\\sin\\left(#1\\right)}\n');
+      await write(main, '\\input{macros-of-the-test}\n\\[ \\swing{x} = x - \\frac{x^3}{5} + O(x^5) \\]\n');
+      const document = await vscode.workspace.openTextDocument(main);
+      await vscode.languages.setTextDocumentLanguage(document, 'latex');
+      await vscode.window.showTextDocument(document);
+      const problem = await until('a problem', () => vscode.languages.getDiagnostics(document.uri).find((d) => d.code === 'fails'));
+      check(document.getText(problem.range).includes('5'), `underlined: ${document.getText(problem.range)}`);
+      await vscode.commands.executeCommand('workbench.action.closeActiveEditor');
+    } finally {
+      for (const uri of [macros, main]) await vscode.workspace.fs.delete(uri).then(undefined, () => undefined);
+    }
+  },
+
+  'Write Test Harness serves other languages than C': async () => {
+    const editor = await open('python', '# leading-order: small x, on |x| <= 0.25\ny = np.sin(x)\n');
+    select(editor, 'np.sin(x)');
+    await vscode.commands.executeCommand('leadingOrder.testHarness');
+    const harness = await until('the program', () => vscode.window.visibleTextEditors.find((e) => e.document.languageId === 'c' && e.document.getText().includes('nextafterf')));
+    check(/reference\(long double x\) \{ return sinl\(x\); \}/.test(harness.document.getText()), harness.document.getText());
+    await vscode.commands.executeCommand('workbench.action.revertAndCloseActiveEditor');
   },
 
   'Copy as Author Query copies place, printed and right': async () => {

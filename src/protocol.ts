@@ -62,7 +62,10 @@ export type Detail = 'reading' | 'ladder' | 'reach' | 'plot' | 'insertion';
 
 export interface FitRequest extends CommonRequest {
   readonly ask: 'fit';
+  /** Not needed beside `intervals`. */
   readonly interval: readonly [string, string];
+  /** Of hypot(x, y) and atan2(y, x): one closed interval a variable, by its name. */
+  readonly intervals?: Readonly<Record<string, readonly [string, string]>>;
   readonly tolerance?: number | string;
   readonly degree?: number;
   readonly measure?: FitMeasure;

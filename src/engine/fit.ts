@@ -2,7 +2,7 @@
 import { termsNeeded } from '../bound/index.ts';
 import { expand } from '../expand/index.ts';
 import { build, type Expression, Q, type Rational } from '../expression/index.ts';
-import { countOperations, estimatedSpeed, type Fit, fit, type FitProblem, type FloatFormat, formatByName } from '../fit/index.ts';
+import { countOperations, estimatedSpeed, type Fit, fit, type FitProblem, type FloatFormat, formatByName, type SecondVariable } from '../fit/index.ts';
 import { describe } from '../functions/index.ts';
 import { budget, type Budget, failure, type Outcome, success } from '../outcome.ts';
 import type { CoefficientAnswer, ExpandRequest, FitAnswer, FitPieceAnswer, FitReductionAnswer, FitRequest, FitSpeedAnswer } from '../protocol.ts';
@@ -36,6 +36,11 @@ export async function askFit(request: FitRequest, tools: EngineTools, time: Budg
 }
 
 function variableIn(request: FitRequest, target: Expression, source: SourceFormula): Outcome<string> {
+  const [named] = Object.keys(request.intervals ?? {});
+  if (named !== undefined) {
+    const read = source.readSymbol(named);
+    return read.ok && read.value.kind === 'symbol' ? success(read.value.name) : failure('bad-request', `The variable "${named}" of the intervals cannot be read; write it as in the text.`);
+  }
   const { text, language, variable } = request;
   const asked: ExpandRequest = { ask: 'expand', text, language, ...(variable === undefined ? {} : { variable }) };
   const found = variableOf(asked, target, source);
@@ -44,10 +49,28 @@ function variableIn(request: FitRequest, target: Expression, source: SourceFormu
   return quantity.kind === 'symbol' ? success(quantity.name) : failure('bad-request', `A fit is made in one symbol, not in ${toPlain(quantity)}; write a new symbol for it.`);
 }
 
-function problemOf(request: FitRequest, target: Expression, variable: string, source: SourceFormula): Outcome<FitProblem> {
-  const low = intervalEnd(request.interval[0], -1);
+/** The other variable of a function of two, with its interval; null where there is none. */
+function secondOf({ intervals }: FitRequest, source: SourceFormula): Outcome<SecondVariable | null> {
+  const [, entry] = Object.entries(intervals ?? {});
+  if (!entry) return success(null);
+  const [name, ends] = entry;
+  const read = source.readSymbol(name);
+  if (!read.ok || read.value.kind !== 'symbol') return failure('bad-request', `The variable "${name}" of the intervals cannot be read; write it as in the text.`);
+  const low = intervalEnd(ends[0], -1);
   if (!low.ok) return low;
-  const high = intervalEnd(request.interval[1], 1);
+  const high = intervalEnd(ends[1], 1);
+  if (!high.ok) return high;
+  if (Q.compare(low.value, high.value) > 0) return failure('bad-request', `The interval of ${name} needs its smaller end first.`);
+  return success({ variable: read.value.name, low: low.value, high: high.value, intervalText: [plainEnd(ends[0]), plainEnd(ends[1])] });
+}
+
+function problemOf(request: FitRequest, target: Expression, variable: string, source: SourceFormula): Outcome<FitProblem> {
+  const second = secondOf(request, source);
+  if (!second.ok) return second;
+  const first = Object.values(request.intervals ?? {})[0] ?? request.interval;
+  const low = intervalEnd(first[0], -1);
+  if (!low.ok) return low;
+  const high = intervalEnd(first[1], 1);
   if (!high.ok) return high;
   if (Q.compare(low.value, high.value) >= 0) return failure('bad-request', 'The interval of a fit needs two different ends, the smaller one first.');
   const tolerance = request.tolerance === undefined ? null : Q.fromDecimal(String(request.tolerance).trim());
@@ -72,8 +95,9 @@ function problemOf(request: FitRequest, target: Expression, variable: string, so
     contraction: request.contraction ?? 'any',
     method: request.method ?? 'minimax',
     pieces: request.pieces ?? 1,
+    ...(second.value ? { second: second.value } : {}),
     ...(request.reduction ? { reduction: request.reduction } : {}),
-    intervalText: [plainEnd(request.interval[0]), plainEnd(request.interval[1])],
+    intervalText: [plainEnd(first[0]), plainEnd(first[1])],
     ...(request.basis ? { basis: request.basis } : {}),
     ...(request.exact ? { exact: request.exact } : {}),
     ...(request.result ? { result: request.result } : {}),
@@ -129,7 +153,7 @@ function answerOf(found: Fit, problem: FitProblem, request: FitRequest, constant
     },
     code: found.code.code,
     imports: found.code.imports,
-    taylorDegree: taylorDegree(found, problem, request, time),
+    taylorDegree: problem.second ? null : taylorDegree(found, problem, request, time),
     assumptions: [...constants, ...found.assumptions],
     operations: countOperations(found.program),
     ...speedOf(found, problem),

@@ -68,6 +68,7 @@ const SPECIFIC: Readonly<Record<Request['ask'], Readonly<Record<string, Check>>>
     method: oneOf('minimax', 'taylor', 'economized', 'rational'),
     result: oneOf('function', 'expression'),
     details: texts,
+    intervals: (v) => (typeof v === 'object' && v !== null && !Array.isArray(v) && Object.keys(v).length >= 1 && Object.keys(v).length <= 2 && Object.values(v).every((item) => ends(item) === null) ? null : 'must map one or two variables to lists of two ends'),
     reduction: oneOf('auto', 'none', 'always'),
     pieces: (v) => (v === 'auto' ? null : count(1, 1000)(v)),
   },
@@ -103,6 +104,11 @@ export function validateRequest(value: unknown): Outcome<Request> {
   if (Array.isArray(cleaned['interval'])) cleaned['interval'] = cleaned['interval'].map(String);
   if (cleaned['terms'] !== undefined && cleaned['order'] !== undefined) return failure('bad-request', 'Ask for "terms" or for "order", not for both.');
   if (cleaned['variable'] !== undefined && cleaned['small'] !== undefined) return failure('bad-request', 'Name one "variable" or several "small" quantities, not both.');
+  const { intervals } = cleaned;
+  if (ask === 'fit' && typeof intervals === 'object' && intervals !== null) {
+    cleaned['intervals'] = Object.fromEntries(Object.entries(intervals as Readonly<Record<string, readonly unknown[]>>).map(([name, list]) => [name, list.map(String)]));
+    cleaned['interval'] ??= Object.values(cleaned['intervals'] as object)[0];
+  }
   if (ask === 'fit' && cleaned['interval'] === undefined) return failure('bad-request', 'A fit needs an "interval".');
   return success(cleaned as unknown as Request);
 }

@@ -12,7 +12,7 @@ import { splitFit } from './pieces.ts';
 import { type PolynomialFit, fitPolynomial, type PolynomialProblem } from './polynomialFit.ts';
 import type { Program } from './program.ts';
 import type { FitMeasure, ProvedError } from './proof.ts';
-import { LOCALS, needsHighDegree, notReducible, type Reduced, reduce, reducible, type ReductionProblem } from './reduce/index.ts';
+import { LOCALS, needsHighDegree, notReducible, PAIR_LOCALS, recognisePair, reducePair, type Reduced, reduce, reducible, type ReductionProblem } from './reduce/index.ts';
 import type { Basis } from './search.ts';
 
 export interface FitProblem {
@@ -40,6 +40,15 @@ export interface FitProblem {
   /** How the interval is written in the comment. */
   readonly intervalText: readonly [string, string];
   readonly result?: 'function' | 'expression';
+  /** Of hypot(x, y) and atan2(y, x): the other variable; `variable` is either of the two. */
+  readonly second?: SecondVariable;
+}
+
+export interface SecondVariable {
+  readonly variable: string;
+  readonly low: Rational;
+  readonly high: Rational;
+  readonly intervalText: readonly [string, string];
 }
 
 export interface Fit {
@@ -95,6 +104,7 @@ function fitted(problem: FitProblem, budget: Budget): Fit {
   const shared = { ...problem, format, ...withOperations(language, format), fma: fused === 'exactly', writtenFma: contraction === 'fma' };
   if (method === 'rational') return rational(problem, { ...shared, method: 'minimax' }, format, budget);
   const whole: PolynomialProblem = { ...shared, method };
+  if (problem.second) return pair(problem, problem.second, whole, written, budget);
   const { reduction = 'auto' } = problem;
   if (reduction === 'always' && (problem.pieces !== 1 || problem.result === 'expression')) throw new Declined('bad-request', 'Reduced arguments are written as one function; leave pieces and result out.');
   if (reduction === 'none' || problem.pieces !== 1 || problem.result === 'expression') return plain(problem, whole, written, budget);
@@ -102,7 +112,7 @@ function fitted(problem: FitProblem, budget: Budget): Fit {
   const shape = reducible(asked);
   const viaReduction = (): Fit => {
     if (!shape) throw notReducible();
-    return reducedFit(problem, asked, reduce(asked, shape, budget), written);
+    return reducedFit(problem, [asked.parameter], whole, reduce(asked, shape, budget), written);
   };
   if (reduction === 'always') return viaReduction();
   const viaPolynomial = (): Fit => plain(problem, whole, written, budget);
@@ -125,13 +135,27 @@ function firstOf(way: () => Fit, other: () => Fit): Fit {
   }
 }
 
-function reducedFit(problem: FitProblem, { whole, row, parameter }: ReductionProblem, { kernels, body, error, method }: Reduced, written: FloatFormat): Fit {
+function pair(problem: FitProblem, second: SecondVariable, whole: PolynomialProblem, written: FloatFormat, budget: Budget): Fit {
+  const found = recognisePair(problem.function);
+  if (!found || ![problem.variable, second.variable].every((v) => found.variables.includes(v))) throw new Declined('bad-request', 'Functions of two variables are fitted for hypot(x, y), sqrt(x^2 + y^2) and atan2(y, x); give values for the other symbols.');
+  if (whole.method !== 'minimax' || problem.reduction === 'none' || problem.pieces !== 1 || problem.result === 'expression' || (whole.format.name !== 'binary32' && whole.format.name !== 'binary64')) throw new Declined('bad-request', 'Functions of two variables are fitted by reduction, as one function in binary32 or binary64; leave method, reduction, pieces and result out.');
+  const boxes = found.variables.map((v) => (v === problem.variable ? { low: problem.low, high: problem.high } : { low: second.low, high: second.high }));
+  const names = found.variables.map((v) => (/^[A-Za-z][A-Za-z0-9]*$/.test(v) && !rowFor(problem.language).reserved.includes(v) && !PAIR_LOCALS.includes(v) ? v : null));
+  const [a, b] = boxes;
+  const [first, other] = names.every((n) => n !== null) ? names : found.kind === 'hypot' ? ['x', 'y'] : ['y', 'x'];
+  if (!a || !b || !first || !other) throw new RangeError('two variables');
+  const reduced = reducePair({ kind: found.kind, whole, row: rowFor(problem.language), parameters: [first, other], boxes: [a, b] }, budget);
+  return reducedFit(problem, [first, other], whole, reduced, written, found.kind);
+}
+
+function reducedFit(problem: FitProblem, parameters: readonly string[], whole: PolynomialProblem, { kernels, body, error, method }: Reduced, written: FloatFormat, word?: string): Fit {
+  const row = rowFor(problem.language);
   const [first] = kernels;
   if (!first) throw new RangeError('no polynomial');
   const { format } = whole;
   const assumptions = assumptionsOf(problem, format);
   const comment = commentOf(problem, format, error, assumptions, `By reduction: ${method}.`);
-  const code = wholeFunction({ name: functionName(wordsFor(problem.function), row.id), parameters: [parameter], body, language: problem.language, format: written, comment });
+  const code = wholeFunction({ name: functionName(word === undefined ? wordsFor(problem.function) : [word, 'approximation'], row.id), parameters, body, language: problem.language, format: written, comment });
   const list = kernels.map(({ function: f, low, high, found }): KernelFit => ({ function: f, low, high, terms: found.terms, degree: found.degree, centre: found.centre }));
   return {
     terms: first.found.terms,
@@ -275,12 +299,12 @@ const MEASURES: Readonly<Record<FitMeasure, string>> = { absolute: 'absolute err
 const WIDTH = 92;
 
 function commentOf(problem: FitProblem, format: { readonly name: string; readonly argument?: string }, error: ProvedError, assumptions: readonly string[], way?: string): string[] {
-  const [low, high] = problem.intervalText;
+  const where = [problem, ...(problem.second ? [problem.second] : [])].map(({ variable, intervalText: [low, high] }) => `${variable.replace(/\\/g, '')} in [${low}, ${high}]`).join(', ');
   const total = real.rationalToDecimal(error.total, 4, 1);
   const subnormal = error.subnormal ? ` (where the function is below the smallest normal number: absolute error at most ${real.rationalToDecimal(error.subnormal, 4, 1)})` : '';
   const unit = problem.measure === 'ulp' ? ' ulp' : '';
   return [
-    `${toPlain(problem.function)} for ${problem.variable.replace(/\\/g, '')} in [${low}, ${high}], ${format.name}.`,
+    `${toPlain(problem.function)} for ${where}, ${format.name}.`,
     `Proven for every ${format.argument ?? `${format.name} argument`} in the interval, evaluation included: ${MEASURES[problem.measure].replace(' in ulp', '')} at most ${total}${unit}${subnormal}.`,
     ...(way === undefined ? [] : [way]),
     `Assumes: ${assumptions.join('; ')}.`,

@@ -72,7 +72,7 @@ export function reduceArctangent(problem: ReductionProblem, factor: Expression, 
   const pick = (of: (w: TwoWords) => Rational): Expression => choice([far, build.number(of(half))], [middle, build.number(of(quarter))], [null, build.number(Q.ZERO)]);
   const { steps, value } = kernelStatements(kernel.found.writtenProgram);
   const rounded = row.family === 'javascript';
-  const whenSigned: readonly Statement[] = [let_('y', build.sum(h, build.sum(l, value))), { kind: 'return', value: choice([relation(x, '<', Q.ZERO), build.negation(y)], [null, y]), rounded }];
+  const whenSigned: readonly Statement[] = [let_('y', build.sum(h, build.sum(l, value))), let_('w', choice([relation(x, '<', Q.ZERO), build.negation(y)], [null, y])), { kind: 'return', value: build.symbol('w'), rounded }];
   return {
     kernels: [kernel],
     body: [

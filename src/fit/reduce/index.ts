@@ -11,6 +11,7 @@ import { reduceLogarithm } from './logarithm.ts';
 import { reducePower } from './power.ts';
 import { recognise, type Shape } from './recognise.ts';
 
+export { PAIR_LOCALS, recognisePair, reducePair } from './pair.ts';
 export { LOCALS, type Kernel, type Reduced, type ReductionProblem } from './kernel.ts';
 
 /** Degrees beyond this are served better by a reduction (protocol `reduction`: `auto`). */

@@ -1,5 +1,6 @@
 export type { Assumption, AssumptionRelation } from './assumption.ts';
 export * from './expression.ts';
+export { markedName } from './derivativeMarks.ts';
 export { PLAIN_STYLE, type DocumentStyle, type OrderStyle } from './style.ts';
 export * as build from './build.ts';
 export * as Q from './rational.ts';

@@ -1,7 +1,6 @@
 /** Finite sums of t^m exp(lambda t) with exact coefficients: closed under sums, products and integration, so that linear equations with constant coefficients are solved in it. */
 import type { Element } from '../../algebra/types.ts';
-import { build, dependsOn, type Expression, Q } from '../../expression/index.ts';
-import { differentiate } from '../../functions/index.ts';
+import { build, type Expression, Q } from '../../expression/index.ts';
 import { Declined } from '../../outcome.ts';
 import { addElements, type Context, isRational, multiplyElements, negateElement } from '../../series/index.ts';
 import { addPolynomials, derivativeOf, type Polynomial, scalePolynomial, trimmed } from './operator.ts';
@@ -79,9 +78,11 @@ export function modesOf(c: Context, e: Expression, t: string, known: (symbol: st
       case 'product':
         return node.factors.map(visit).reduce((a, b) => multiplyModes(c, a, b));
       case 'quotient': {
-        const below = constantValue(visit(node.denominator));
-        if (below === null) return refuse();
-        return scaleModes(c, visit(node.numerator), c.field.divide(Q.ONE, below));
+        // A single exponential has a reciprocal of its kind.
+        const [below, more] = visit(node.denominator);
+        if (!below || more || below.polynomial.length !== 1) return refuse();
+        const inverse = { re: negateElement(c, below.re), im: negateElement(c, below.im), polynomial: [c.field.divide(Q.ONE, below.polynomial[0] as Element)] };
+        return multiplyModes(c, visit(node.numerator), [inverse]);
       }
       case 'power':
         return raised(node.base, node.exponent);
@@ -112,8 +113,7 @@ export function modesOf(c: Context, e: Expression, t: string, known: (symbol: st
     const value = constantValue(modes);
     if (value !== null) return { rate: Q.ZERO, phase: value };
     const [only] = modes;
-    const slope = differentiate(argument, t);
-    if (modes.length !== 1 || !only || only.polynomial.length !== 2 || !slope || dependsOn(argument, '~')) return null;
+    if (modes.length !== 1 || !only || only.polynomial.length !== 2) return null;
     if (!(isRational(only.re) && only.re.num === 0n && isRational(only.im) && only.im.num === 0n)) return null;
     return { rate: only.polynomial[1] as Element, phase: only.polynomial[0] as Element };
   };

@@ -60,7 +60,7 @@ class Perturbation {
   private operator: Polynomial = [];
   private basis: readonly { readonly mode: Pick<Mode, 're' | 'im'>; readonly power: number }[] = [];
   private readonly solved: ExponentialPolynomial[][] = [];
-  private readonly assumed: Expansion['assumptions'][number][] = [];
+  private readonly assumed: string[] = [];
 
   constructor(
     private readonly problem: PerturbationProblem,
@@ -114,7 +114,10 @@ class Perturbation {
     const rates = Array.from({ length: order + 1 }, (_, j) => differentiate(zeroth, this.symbolOf(j, 0)));
     const isTop = rates[order];
     if (!isTop || (isTop.kind === 'number' && Q.isZero(isTop.value))) throw new Declined('no-expansion', 'The highest derivative is multiplied by the small parameter (a singular perturbation): the solution has no expansion in its powers that holds everywhere; rescale the variable inside the boundary layer.');
-    const constant = rates.map((r) => (r && !freeSymbols(r).some((s) => s.includes('~') || s === this.time) ? c.field.fromExpression(r) : null));
+    const constant = rates.map((r) => {
+      const rate = r ? c.field.fromExpression(r) : null;
+      return rate && (isRational(rate) || !c.field.parameters(rate).some((s) => s.includes('~') || s === this.time)) ? rate : null;
+    });
     if (constant.every((a) => a !== null)) {
       this.operator = constant as Element[];
       this.basis = this.homogeneous();
@@ -221,6 +224,7 @@ class Perturbation {
     let quiet = 0;
     for (let k = 0; remainder === null; k += 1) {
       c.budget.check();
+      const resting = this.assumed.length;
       const x = this.solved[k]?.[0] ?? this.solveNext();
       quiet = x.length === 0 ? quiet + 1 : 0;
       if (quiet >= QUIET) {
@@ -229,8 +233,11 @@ class Perturbation {
       }
       if (x.length === 0) continue;
       const beyond = count !== undefined ? terms.length >= count : order !== undefined && Q.compare(Q.rational(k), order) >= 0;
-      if (beyond) remainder = { power: build.number(k), log: 0, scale: null };
-      else {
+      if (beyond) {
+        remainder = { power: build.number(k), log: 0, scale: null };
+        // Conditions of the term left out are not those of the sum.
+        this.assumed.length = resting;
+      } else {
         terms.push({ coefficient: treeOf(c, x, time), power: build.number(k), log: 0, scale: null });
         this.noteSecular(k, x);
       }

@@ -1,5 +1,5 @@
 /** A differential equation, or a system, as it stands in a text: which names are functions of which variable, and what is given at the start. */
-import { build, dependsOn, type Expression, freeSymbols, mapChildren, Q, sameExpression, walk } from '../../expression/index.ts';
+import { build, dependsOn, type Expression, freeSymbols, mapChildren, markedName, Q, sameExpression, walk } from '../../expression/index.ts';
 import { differentiate } from '../../functions/index.ts';
 import { Declined } from '../../outcome.ts';
 
@@ -40,14 +40,6 @@ export const slot = (name: string, derivative: number): string => `${name}~${der
 export function slotOf(symbol: string): { readonly name: string; readonly derivative: number } | null {
   const at = symbol.lastIndexOf('~');
   return at < 0 ? null : { name: symbol.slice(0, at), derivative: Number(symbol.slice(at + 1)) };
-}
-
-/** A derivative written on the name: `y''`, `\dot{x}`, `\ddot{\theta}_1`; `dots` where it is one in time. */
-export function markedName(symbol: string): { readonly name: string; readonly derivative: number; readonly dots: boolean } | null {
-  const dotted = /^\\(d{0,3})dot\{(.+?)\}((?:_.+)?)$/.exec(symbol);
-  if (dotted) return { name: `${dotted[2] ?? ''}${dotted[3] ?? ''}`, derivative: (dotted[1] ?? '').length + 1, dots: true };
-  const primed = /^([^']+)('+)((?:_.+)?)$/.exec(symbol);
-  return primed ? { name: `${primed[1] ?? ''}${primed[3] ?? ''}`, derivative: (primed[2] ?? '').length, dots: false } : null;
 }
 
 interface Evidence {

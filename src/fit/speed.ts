@@ -17,21 +17,20 @@ export interface Speed {
 const DIVISION = 4;
 const OVERHEAD = 2;
 
-/** Library calls in binary64. */
-const CALLS: Readonly<Record<string, number>> = {
-  exp: 16, expm1: 34, log: 18, log1p: 34, log10: 32, log2: 20, sin: 26, cos: 26, tan: 46, cot: 50, sec: 30, csc: 30, asin: 30, acos: 30, atan: 34, sinh: 40, cosh: 36, tanh: 44,
-  asinh: 50, acosh: 50, atanh: 44, erf: 44, erfc: 50, gamma: 150, loggamma: 110, cbrt: 36, power: 40, sqrt: DIVISION, abs: 1,
+/** Library calls in binary32 and binary64. */
+const CALLS: Readonly<Record<string, readonly [number, number]>> = {
+  exp: [10, 24], expm1: [22, 34], log: [14, 19], log1p: [24, 34], log10: [18, 32], log2: [12, 20], sin: [8, 34], cos: [8, 34], tan: [12, 50], cot: [16, 54], sec: [12, 38], csc: [12, 38],
+  asin: [14, 17], acos: [14, 17], atan: [13, 40], sinh: [20, 40], cosh: [18, 36], tanh: [20, 38], asinh: [26, 50], acosh: [26, 50], atanh: [24, 44], erf: [14, 26], erfc: [24, 40],
+  gamma: [60, 150], loggamma: [40, 110], cbrt: [26, 60], power: [22, 44], sqrt: [DIVISION, DIVISION], abs: [1, 1],
 };
 /** A function without a figure of its own: a special function by series or recurrence. */
-const OTHER = 150;
-/** binary32 functions do with shorter polynomials. */
-const SINGLE = 0.6;
+const OTHER: readonly [number, number] = [80, 150];
 /** Code is interpreted there: operations cost as much as calls do. */
 const INTERPRETED: ReadonlySet<string> = new Set(['python', 'matlab', 'r']);
 
-function callCost(e: Expression, single: number): number {
-  const below = (list: readonly Expression[]): number => list.reduce((sum, part) => sum + callCost(part, single), 0);
-  const call = (name: string): number => (name === 'sqrt' || name === 'abs' ? 1 : single) * (CALLS[name] ?? OTHER);
+function callCost(e: Expression, width: 0 | 1): number {
+  const below = (list: readonly Expression[]): number => list.reduce((sum, part) => sum + callCost(part, width), 0);
+  const call = (name: string): number => (CALLS[name] ?? OTHER)[width];
   switch (e.kind) {
     case 'sum':
       return e.terms.length - 1 + below(e.terms);
@@ -81,6 +80,6 @@ export function estimatedSpeed(f: Expression, program: Program, format: string, 
   if (INTERPRETED.has(codeLanguage(language)?.id ?? '')) return null;
   const operations: Operations = countOperations(program);
   const code = OVERHEAD + operations.multiplications + operations.additions + operations.fused + (DIVISION - 1) * divisions(program);
-  const call = Math.round(callCost(f, format === 'binary64' ? 1 : SINGLE));
+  const call = callCost(f, format === 'binary64' ? 1 : 0);
   return call > 0 ? { code, call: call + OVERHEAD, ratio: Number(((call + OVERHEAD) / code).toPrecision(2)) } : null;
 }

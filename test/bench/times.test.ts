@@ -1,5 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { CASES } from './cases.ts';
+import { has } from '../exhaustive/compile.ts';
+import { emittedSpeeds } from './emitted.ts';
 import { benchEngine, medianOf } from './measure.ts';
 
 describe('engine time, warm', () => {
@@ -8,4 +10,15 @@ describe('engine time, warm', () => {
     expect(ok).toBe(true);
     expect(median).toBeLessThan(5 * timed.aim);
   });
+});
+
+describe('estimated speed of emitted code', () => {
+  it.skipIf(!has('gcc'))('within a factor of six of what is measured', async () => {
+    const rows = await emittedSpeeds(2);
+    expect(rows).toHaveLength(4);
+    for (const { estimated, measured } of rows) {
+      expect(measured).toBeGreaterThan(estimated / 6);
+      expect(measured).toBeLessThan(estimated * 6);
+    }
+  }, 60_000);
 });

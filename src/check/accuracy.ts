@@ -60,7 +60,7 @@ function intervalFrom(conditions: readonly Expression[], words: string, variable
     if (found) return found;
   }
   for (const match of words.matchAll(/\$([^$]+)\$|((?:\|[^|\n]{1,40}\||[\w\\.\-/+ ]{1,30}(?:<=?|\\leq?|≤)\s*[\w\\]{1,20})\s*(?:<=?|\\leq?(?![a-z])|≤)\s*[\w\\./{}^-]+)/g)) {
-    const piece = (match[1] ?? match[2] ?? '').replace(/[.,;]+$/, '');
+    const piece = (match[1] ?? match[2] ?? '').replace(/[.,;]+$/, '').trim();
     for (const candidate of [piece, piece.replace(/^(?:for|when|if|where|all|in|on)\s+/i, '')]) {
       const read = readFormula(candidate, candidate.includes('\\') ? 'latex' : 'plain', { symbols: [variable] });
       const found = read.ok ? intervalOf(read.value.expression, variable) : null;
@@ -69,6 +69,9 @@ function intervalFrom(conditions: readonly Expression[], words: string, variable
   }
   return null;
 }
+
+/** An interval of the variable that running words state. */
+export const intervalIn = (words: string, variable: string): Ends | null => intervalFrom([], words, variable);
 
 /** |x| < c, |x - a| <= c, a < x < b, a <= x <= b. */
 export function intervalOf(e: Expression, variable: string): Ends | null {
@@ -103,7 +106,7 @@ export function judgeAccuracy(statement: Statement, f: Expression, sum: Expressi
 }
 
 /** Two significant digits, rounded up; percent where the text has percent. */
-function decimalUp(value: Rational, percent: boolean): string {
+export function decimalUp(value: Rational, percent: boolean): string {
   const shown = percent ? Q.multiply(value, Q.rational(100)) : value;
   if (Q.isZero(shown)) return '0';
   let exponent = Math.floor(Math.log10(Q.toDouble(shown)));

@@ -3,10 +3,11 @@ import type { Finding } from '../protocol.ts';
 import type { SeriesBranch } from '../read/index.ts';
 import type { Claim } from './claims.ts';
 import { findingOf, type Place } from './findings.ts';
+import type { PolynomialReader } from './remarks.ts';
 import type { Asked } from './setting.ts';
 
 /** What reads the branches of a program; CodeReader fits once its grammar is loaded. */
-export interface BranchReader {
+export interface BranchReader extends PolynomialReader {
   readBranches(text: string, language: string): readonly SeriesBranch[];
 }
 

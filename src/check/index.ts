@@ -12,6 +12,7 @@ import { type FoundFormula, formulasOf } from './formulas.ts';
 import { type CheckMemory, macrosUsed, signatureOf } from './memory.ts';
 import { isGridName } from './normalise.ts';
 import { quantitiesNamed } from './quantities.ts';
+import { remarkFinding, remarksIn } from './remarks.ts';
 import type { Asked } from './setting.ts';
 import { hasMarks } from './truncated.ts';
 
@@ -101,7 +102,8 @@ function* checking(parts: CheckParts, budget: Budget): Generator<void, Checked> 
     findings.push(...remembered(parts.memory, key, start, budget, judgeAll));
     yield;
   }
-  for (const branch of parts.code?.readBranches(parts.text, parts.language) ?? []) {
+  const branches = parts.code?.readBranches(parts.text, parts.language) ?? [];
+  for (const branch of branches) {
     const note = settingsAt(notes, branch.span.start);
     if (note.skip === true) continue;
     const { start, end } = branch.span;
@@ -110,8 +112,20 @@ function* checking(parts: CheckParts, budget: Budget): Generator<void, Checked> 
     findings.push(...remembered(parts.memory, key, start, budget, judgeBranch));
     yield;
   }
+  for (const remark of parts.code && PROMISING.test(parts.text) ? remarksIn(parts.text, parts.code.readPolynomials(parts.text, parts.language), parts.code.readComments(parts.text, parts.language), branches) : []) {
+    const { start } = remark.place;
+    const note = settingsAt(notes, start);
+    // A formula in the comment has been judged by the same words.
+    if (note.skip === true || findings.some((f) => f.start === start)) continue;
+    const key = (): string => signatureOf([request, remark.comment.text, remark.polynomial.expression, remark.polynomial.format, remark.named, remark.interval, remark.tolerance]);
+    findings.push(...remembered(parts.memory, key, start, budget, (time) => withinTime(remark.place, () => [remarkFinding(remark, { ...asked, budget: share(time) })])));
+    yield;
+  }
   return { findings: findings.sort((a, b) => a.claim.start - b.claim.start || a.start - b.start), unread: unread.map(({ start, end, reason, unknown }) => ({ start, end, reason: unknown && absent.length > 0 ? `${reason.replace(/\.$/, '')}${orIn(absent)}.` : reason })) };
 }
+
+/** Words by which comments promise an accuracy. */
+const PROMISING = /\berr(?:or)?s?\b|\baccura|\bprecis|\bwithin\b|\bgood\s+to\b|\bcorrect\s+to\b|\bdeviat|\beps(?:ilon)?\b|ε/i;
 
 /** Findings kept from an earlier check, else judged now and kept, unless time ran short. */
 function remembered(memory: CheckMemory | undefined, keyOf: () => string, start: number, budget: Budget, find: (time: Budget) => readonly Finding[]): readonly Finding[] {

@@ -79,6 +79,10 @@ export interface FitRequest extends CommonRequest {
   readonly contraction?: 'any' | 'none' | 'fma';
   readonly method?: 'minimax' | 'taylor' | 'economized' | 'rational';
   readonly pieces?: number | 'auto';
+  /** The function asserts that its arguments lie in the interval, in the language's way. */
+  readonly assertion?: boolean;
+  /** Floats that the leading coefficient is the sum of: 1, 2, by default 2 only where a relative tolerance is not kept with 1. Two words are two coefficients of one power, the larger first. */
+  readonly words?: 1 | 2;
   /** Whether the argument of exp, log, sin, cos, atan or a constant power is reduced to a small interval first: `auto` (default) where a plain polynomial would need a degree above 12 for the tolerance. A degree is that on the small interval. */
   readonly reduction?: 'auto' | 'none' | 'always';
   /** Code as a function (default) or as one expression in the variable. */
@@ -193,6 +197,8 @@ export interface ExpandAnswer {
   readonly ladder?: readonly LadderRow[];
   readonly reach?: readonly ReachRow[];
   readonly at?: { readonly argument: string; readonly function: string; readonly sum: string; readonly error: string; readonly percent: string | null; /** Enclosures behind the shown digits. */ readonly enclosures?: unknown };
+  /** With `at`, of a divergent series: how many terms stand before the least one, where the sum is best stopped, and that term's size there, rounded up. */
+  readonly leastTerm?: { readonly terms: number; readonly size: string };
   readonly left?: ExpandAnswer;
   readonly branches?: readonly ExpandAnswer[];
   /** Of an equation simplified in place: each replaced piece, as LaTeX, and its leading terms. `latex` and `text` are then the whole equation; `terms`, `remainder` and `numeric` are those of the piece where there is one, else `terms` is empty and `numeric` is left minus right side. */

@@ -2,10 +2,11 @@
 import type { Assumption, Expression, Rational } from '../expression/index.ts';
 import type { Expansion } from '../expand/index.ts';
 import { attempt, type Budget, type Outcome } from '../outcome.ts';
+import { type LeastTerm, leastTermAt } from './leastTerm.ts';
 import { type IntegralValue, integralValue } from './integral.ts';
 import { ladderOf, type NeededProblem, reachWith, termsNeededFor } from './needed.ts';
 import { bound } from './remainder.ts';
-import type { BoundProblem, LadderEntry, Measure, RemainderBound, TermsNeeded, ValueAt } from './types.ts';
+import type { BoundProblem, ExpansionWithTerms, LadderEntry, Measure, RemainderBound, TermsNeeded, ValueAt } from './types.ts';
 import { valueAtArgument } from './value.ts';
 
 export type { BoundProblem, ClosedInterval, ExpansionWithTerms, LadderEntry, Measure, Reach, RemainderBound, TermsNeeded, ValueAt } from './types.ts';
@@ -33,3 +34,6 @@ export { boundDifference, type DifferenceBound, type DifferenceProblem, polynomi
 
 /** The value of an expression that holds definite integrals, enclosed to an absolute tolerance; singular and infinite ends included. Fails with bad-request where the integral diverges, undecided where it could not be enclosed. */
 export const definiteIntegral = (expression: Expression, tolerance: Rational, assumptions: readonly Assumption[], budget: Budget): Outcome<IntegralValue> => attempt(() => integralValue(expression, tolerance, assumptions, budget));
+
+/** For a divergent series: how many terms to keep at an exact argument, and the size of the first one to leave out, the least of all. */
+export const leastTerm = (expansionWithTerms: ExpansionWithTerms, argument: Expression, assumptions: readonly Assumption[], budget: Budget): Outcome<LeastTerm | null> => attempt(() => leastTermAt(expansionWithTerms, argument, assumptions, budget));

@@ -1,6 +1,6 @@
 /** Bound, terms needed, ladder, reach and value at an argument, added to an expansion's answer. */
 import type { Assumption, Rational } from '../expression/index.ts';
-import { boundRemainder, type ClosedInterval, ladder, type NeededProblem, reachFor, type RemainderBound, termsNeeded, type TermsNeeded, valueAt } from '../bound/index.ts';
+import { boundRemainder, type ClosedInterval, ladder, leastTerm, type NeededProblem, reachFor, type RemainderBound, termsNeeded, type TermsNeeded, valueAt } from '../bound/index.ts';
 import type { Expansion } from '../expand/index.ts';
 import { Q } from '../expression/index.ts';
 import { type Budget, failure, type Outcome, success } from '../outcome.ts';
@@ -54,6 +54,8 @@ export function withBounds(answer: ExpandAnswer, expander: Expander, request: Ex
     if (!value.ok) return value;
     const { value: f, sum, error, percentage } = value.value;
     result = { ...result, at: { argument: toPlain(argument.value), function: middle(f), sum: middle(sum), error: middle(error), percent: percentage ? middle(percentage) : null, enclosures: value.value } };
+    const least = expander.first.divergent ? leastTerm(expander.withTerms, argument.value, assumptions, time) : null;
+    if (least?.ok && least.value) result = { ...result, leastTerm: least.value };
   }
   const measured = result.bound !== undefined || result.reach !== undefined || result.at !== undefined;
   return success(measured && constants.stated.length > 0 ? { ...result, assumptions: [...result.assumptions, ...constants.stated] } : result);

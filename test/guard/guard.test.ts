@@ -12,7 +12,7 @@ import type { GuardAnswer } from '../../src/protocol.ts';
 import { ask } from '../fit/engine.ts';
 
 const gcc = has('gcc');
-if (!gcc) console.warn('gcc is absent: emitted C is not run');
+if (!gcc) process.stderr.write('gcc is absent: emitted C is not run\n');
 
 describe('emitted guards over floats of the whole interval (every 400 009th; test/exhaustive/guards.ts runs all)', () => {
   it.skipIf(!gcc).each(GUARDS.filter((_, k) => [0, 1, 4, 5, 7, 9, 11, 12, 13].includes(k)))('$text', (c) => {

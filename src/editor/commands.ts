@@ -14,7 +14,7 @@ import { settingsFor } from './settings.ts';
 import { countsText } from './status.ts';
 import { testHarness } from './testHarness.ts';
 import { checkWorkspace } from './workspaceCheck.ts';
-import { plainSymbol } from './words.ts';
+import { plainSymbol, said } from './words.ts';
 
 interface Target {
   readonly document: vscode.TextDocument;
@@ -102,7 +102,7 @@ async function applyProposal(room: Room, target: Target, kind: string, link: unk
   const proposals = stale ? [] : await room.services.consultant.proposals(target.document, consultation);
   const proposal = proposals.find((candidate) => candidate.kind === kind) ?? proposals[0];
   if (stale) return applyChecked({ uri: target.document.uri.toString(), version: -1, expected: [] }, []);
-  if (!proposal) return say(consultation.answer.ok ? vscode.l10n.t('There is nothing to insert here.') : consultation.answer.error.message);
+  if (!proposal) return say(consultation.answer.ok ? vscode.l10n.t('There is nothing to insert here.') : said(consultation.answer.error.message));
   return applyChecked({ ...groundOf(target.document, proposal.edits), version: consultation.version }, proposal.edits);
 }
 
@@ -188,7 +188,7 @@ async function useLibraryFunction(room: Room, target: Target): Promise<unknown> 
   const answer: GuardAnswer | ErrorAnswer = await room.services.status.during(
     room.services.client.ask<GuardAnswer>({ ask: 'guard', text, selection: place, language, emit: isCode(language) ? language : 'c', ...(reading ? { variable: reading.variable, point: reading.point } : {}), budget_ms: settingsFor(document).budget }),
   );
-  if (!answer.ok) return say(answer.error.message);
+  if (!answer.ok) return say(said(answer.error.message));
   if (answer.forms.length === 0) return say(vscode.l10n.t('No exact form with library functions is known for this expression.'));
   const { forms, format } = answer;
   const written = await room.services.client.consult({ desk: 'forms', text, language, place, forms: forms.map((form) => form.text), ...(format === undefined ? {} : { format }) });
@@ -210,7 +210,7 @@ async function writeTestHarness(room: Room, target: Target): Promise<unknown> {
   const reading = consultation.answer.ok ? consultation.answer.reading : undefined;
   const translation = reading ? await room.services.client.consult({ desk: 'translation', latex: reading.latex, language: 'c' }) : null;
   const content = testHarness(translation && 'code' in translation ? translation.code : null, consultation);
-  if (content === null) return say(consultation.answer.ok ? vscode.l10n.t('A test harness needs one variable, rational coefficients and an interval with decimal ends.') : consultation.answer.error.message);
+  if (content === null) return say(consultation.answer.ok ? vscode.l10n.t('A test harness needs one variable, rational coefficients and an interval with decimal ends.') : said(consultation.answer.error.message));
   const opened = await vscode.workspace.openTextDocument({ language: 'c', content });
   return vscode.window.showTextDocument(opened, vscode.ViewColumn.Beside);
 }

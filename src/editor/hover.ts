@@ -9,7 +9,7 @@ import { engineLanguage, isCode, SELECTOR } from './languages.ts';
 import { commandLink, escapeMarkdown, table } from './markdown.ts';
 import type { PlaceLink, Services } from './services.ts';
 import { settingsFor } from './settings.ts';
-import { limitText, plainSymbol, sourcesText } from './words.ts';
+import { limitText, plainSymbol, said, sourcesText } from './words.ts';
 
 const DEADLINE_MS = 300;
 const PICTURE_DEADLINE_MS = 150;
@@ -87,7 +87,7 @@ function render(document: vscode.TextDocument, consultation: Consultation, selec
     const quiet = answer.error.code === 'unreadable' || answer.error.code === 'unknown-function' || answer.error.code === 'bad-request';
     if (!selected && (quiet || !place) && !(consultation.candidates.length > 1)) return null;
     const text = trusted();
-    text.appendMarkdown(escapeMarkdown(answer.error.message));
+    text.appendMarkdown(escapeMarkdown(said(answer.error.message)));
     const link = linkTo(document, place ?? consultation.selection);
     const links = [consultation.candidates.length > 1 ? commandLink(vscode.l10n.t('Set the small quantity'), 'leadingOrder.setSmallQuantity', [link]) : '', commandLink(vscode.l10n.t('Open the Expansion page'), 'leadingOrder.expandHere', [link])];
     text.appendMarkdown(`\n\n${links.filter(Boolean).join(' · ')}`);
@@ -100,7 +100,7 @@ function render(document: vscode.TextDocument, consultation: Consultation, selec
   head.appendMarkdown(`\n\n${escapeMarkdown(answer.text.length > LONGEST_LINE ? `${answer.text.slice(0, LONGEST_LINE)} …` : answer.text)}`);
   if (answer.left) head.appendMarkdown(`\n\n${escapeMarkdown(vscode.l10n.t('From the left: {0}', answer.left.text))}`);
   head.appendMarkdown(`\n\n${figures(answer, consultation)}`);
-  if (consultation.unbounded !== undefined) head.appendMarkdown(`\n\n${escapeMarkdown(consultation.unbounded)}`);
+  if (consultation.unbounded !== undefined) head.appendMarkdown(`\n\n${escapeMarkdown(said(consultation.unbounded))}`);
   const foot = trusted();
   foot.appendMarkdown(links(link, answer));
   const contents = picture ? [head, picture, foot] : [head, foot];

@@ -12,7 +12,7 @@ import { engineLanguage, isCode, serves } from './languages.ts';
 import { requestCommand } from './requestCommand.ts';
 import type { Services } from './services.ts';
 import { settingsFor } from './settings.ts';
-import { shorten, sourceName } from './words.ts';
+import { said, shorten, sourceName } from './words.ts';
 
 const DETAILS: readonly Detail[] = ['reading', 'ladder', 'reach', 'plot'];
 const FOLLOW_PAUSE_MS = 250;
@@ -132,7 +132,7 @@ export class Page implements vscode.Disposable {
         label: finding.label ?? '',
         claim: text.slice(finding.claim.start, finding.claim.end).replace(/\s+/g, ' ').trim(),
         verdict: finding.verdict,
-        reason: finding.reason,
+        reason: said(finding.reason),
         found: finding.found,
       })),
     };
@@ -315,12 +315,12 @@ export class Page implements vscode.Disposable {
     this.#stale = null;
     this.#proposals = proposals;
     if (!answer.ok) {
-      this.#shown = { kind: 'failure', message: answer.error.message, candidates, asked };
+      this.#shown = { kind: 'failure', message: said(answer.error.message), candidates, asked };
       return;
     }
     if (consultation.place) this.#focus = { uri: document.uri, place: consultation.place, text: document.getText(rangeOf(document, consultation.place.start, consultation.place.end)) };
     const origins = { variable: sourceName(sources.variable), point: sourceName(sources.point), interval: sourceName(sources.interval), tolerance: sourceName(sources.tolerance), terms: sourceName(sources.terms) };
-    this.#shown = { kind: 'expansion', answer, asked, sources, origins, ...(unbounded === undefined ? {} : { unbounded }) };
+    this.#shown = { kind: 'expansion', answer, asked, sources, origins, ...(unbounded === undefined ? {} : { unbounded: said(unbounded) }) };
     this.#remember(answer.text);
   }
 
@@ -354,6 +354,7 @@ export class Page implements vscode.Disposable {
     this.#stale = null;
     this.#consultation = null;
     this.#ground = version;
+    if (answer && !answer.ok) answer = { ...answer, error: { ...answer.error, message: said(answer.error.message) } };
     this.#shown = mode === 'fit' ? { kind: 'fit', answer: answer as FitAnswer | ErrorAnswer | null, controls } : { kind: 'guard', answer: answer as GuardAnswer | ErrorAnswer | null, controls };
     this.#proposals = proposals && 'proposals' in proposals ? proposals.proposals : [];
   }

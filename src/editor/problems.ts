@@ -9,6 +9,7 @@ import { engineLanguage, serves } from './languages.ts';
 import type { Services } from './services.ts';
 import { type Settings, settingsFor } from './settings.ts';
 import type { Counts } from './status.ts';
+import { said } from './words.ts';
 
 const SOURCE = 'Leading Order';
 
@@ -141,7 +142,7 @@ export function countsOf(answer: CheckAnswer): Counts {
 function claimProblem(document: vscode.TextDocument, finding: Finding, settings: Settings): vscode.Diagnostic[] {
   if (finding.severity === 'none') return [];
   const fails = finding.verdict === 'fails';
-  const problem = new vscode.Diagnostic(rangeOf(document, finding.start, finding.end), finding.reason, fails ? settings.severity : vscode.DiagnosticSeverity.Hint);
+  const problem = new vscode.Diagnostic(rangeOf(document, finding.start, finding.end), said(finding.reason), fails ? settings.severity : vscode.DiagnosticSeverity.Hint);
   problem.source = SOURCE;
   problem.code = fails ? 'fails' : finding.verdict === 'undecided' ? 'undecided' : 'hint';
   return [problem];

@@ -1,6 +1,13 @@
 /** Sentences that hover, menus and page share. */
 import * as vscode from 'vscode';
 import type { Question, Source, Sources } from '../worker/desk/types.ts';
+import { recognise } from './sentences.ts';
+
+/** An engine's sentence in the user's language; what is filled in may be such a sentence itself. */
+export function said(message: string): string {
+  const known = recognise(message);
+  return known ? vscode.l10n.t(known.sentence, ...known.values.map((value) => (value.length < message.length ? said(value) : value))) : message;
+}
 
 export function sourceName(source: Source | undefined): string {
   switch (source) {

@@ -5,6 +5,7 @@ import { engineLanguage } from './languages.ts';
 import type { Services } from './services.ts';
 import { countsText } from './status.ts';
 import { countsOf } from './problems.ts';
+import { said } from './words.ts';
 
 const FILES = '**/*.{tex,ltx,md,qmd,rmd,c,h,cc,cpp,hpp,cu,py,js,jsx,ts,tsx,rs,java,go,cs,jl,f,f90,f95,f03,f08,m,r,R,glsl,hlsl,kt,swift}';
 const MOST_FILES = 2000;
@@ -48,6 +49,6 @@ const byExtension = (uri: vscode.Uri): string => EXTENSIONS[uri.path.split('.').
 function section(name: string, text: string, findings: readonly Finding[]): string {
   const lineOf = (offset: number): number => text.slice(0, offset).split('\n').length;
   const cell = (words: string): string => words.replace(/\s+/g, ' ').replaceAll('|', '\\|').trim();
-  const rows = findings.map((finding) => `| ${lineOf(finding.start)} | ${finding.verdict} | \`${cell(text.slice(finding.claim.start, finding.claim.end)).slice(0, 120).replaceAll('`', "'")}\` | ${cell(finding.reason)} |`);
+  const rows = findings.map((finding) => `| ${lineOf(finding.start)} | ${finding.verdict} | \`${cell(text.slice(finding.claim.start, finding.claim.end)).slice(0, 120).replaceAll('`', "'")}\` | ${cell(said(finding.reason))} |`);
   return [`## ${name}`, ['| line | verdict | claim | reason |', '| --- | --- | --- | --- |', ...rows].join('\n')].join('\n\n');
 }

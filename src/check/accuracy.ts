@@ -61,7 +61,7 @@ function intervalFrom(conditions: readonly Expression[], words: string, variable
   }
   for (const match of words.matchAll(/\$([^$]+)\$|((?:\|[^|\n]{1,40}\||[\w\\.\-/+ ]{1,30}(?:<=?|\\leq?|≤)\s*[\w\\]{1,20})\s*(?:<=?|\\leq?(?![a-z])|≤)\s*[\w\\./{}^-]+)/g)) {
     const piece = (match[1] ?? match[2] ?? '').replace(/[.,;]+$/, '').trim();
-    for (const candidate of [piece, piece.replace(/^(?:for|when|if|where|all|in|on)\s+/i, '')]) {
+    for (const candidate of [piece.replace(/^(?:(?:for|when|if|where|all|in|on|over)\s+)+/i, ''), piece]) {
       const read = readFormula(candidate, candidate.includes('\\') ? 'latex' : 'plain', { symbols: [variable] });
       const found = read.ok ? intervalOf(read.value.expression, variable) : null;
       if (found) return found;

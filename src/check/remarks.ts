@@ -8,6 +8,7 @@ import { FLOAT_FORMATS, toPlain } from '../write/index.ts';
 import { decimalUp, intervalIn, intervalOf } from './accuracy.ts';
 import { enclose } from './enclose.ts';
 import type { Asked } from './setting.ts';
+import { numberOf } from './size.ts';
 
 /** What reads polynomials and comments of a program. */
 export interface PolynomialReader {
@@ -172,5 +173,10 @@ function intervalSpoken(comment: string, variable: string, symbol: string | null
 /** Rational ends inside of the stated ones, so that what is refuted is refuted on the stated interval too. */
 function rationalEnds(low: Expression, high: Expression): Remark['interval'] {
   const [a, b] = [enclose(low), enclose(high)];
-  return a && b && Q.compare(a.high, b.low) < 0 ? { low: a.high, high: b.low } : null;
+  if (!a || !b) return null;
+  const inside = { low: numberOf(low) ?? Q.negate(shortBelow(Q.negate(a.high))), high: numberOf(high) ?? shortBelow(b.low) };
+  return Q.compare(inside.low, inside.high) < 0 ? inside : null;
 }
+
+/** The next multiple of 2^-40 below. */
+const shortBelow = (q: Rational): Rational => Q.divide(Q.rational(Q.floor(Q.multiply(q, Q.rational(1n << 40n)))), Q.rational(1n << 40n));

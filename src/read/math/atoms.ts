@@ -7,6 +7,7 @@ import { evaluated } from './evaluation.ts';
 import { isName } from './facts.ts';
 import { commandName, wordName } from './functionNames.ts';
 import { numberOf, relationOf } from './grammar.ts';
+import { indexExpression } from './letterFunctions.ts';
 import { name, order } from './names.ts';
 import { deeper, fail, isMark, named, next, node, peek, type State, within } from './state.ts';
 import { type Token, Unreadable } from './tokens.ts';
@@ -348,11 +349,21 @@ function decorated(p: State): Expression {
   if (primes > 0) p.at = behind;
   const value = withSubscript(p, from, `\\${t.text}{${content}}${"'".repeat(primes)}`);
   const bold = BOLD.has(t.text) || inner.some((x) => x.kind === 'command' && BOLD.has(x.text));
+  const struve = /^\\mathbf\{([HL])\}_(\d|\\[a-z]+|n|\{[^{}]*\})$/.exec(value.kind === 'symbol' ? value.name : '');
+  if (struve && primes === 0 && isMark(peek(p), '(') && !bracketHoldsBold(p)) {
+    const index = (struve[2] ?? '').replace(/^\{|\}$/g, '');
+    return node(p, from, { kind: 'call', function: `struve${struve[1] ?? 'H'}`, args: [indexExpression(index), ...bracketArguments(p)], written: `\\mathbf{${struve[1] ?? 'H'}}` });
+  }
   if (bold && value.kind === 'symbol') {
     if (/^\d+$/.test(content)) return node(p, from, build.number(BigInt(content)));
     return node(p, from, { kind: 'vector', operation: 'symbol', name: value.name, args: [] });
   }
   return value;
+}
+
+/** Vectors or matrices in the bracket that opens here: what stands before it is no Struve function then. */
+function bracketHoldsBold(p: State): boolean {
+  return p.tokens.slice(p.at, Math.max(p.at, p.match[p.at] ?? p.at)).some((t) => t.kind === 'command' && BOLD.has(t.text));
 }
 
 /** The spelling of the tokens in an accent's argument; letters behind a command stay apart from it: `\mathbf{r}` for `\mathbf r`. */

@@ -41,12 +41,28 @@ function supply(expansionWithTerms: ExpansionWithTerms): (n: number) => Expansio
   };
 }
 
-function bounder(problem: NeededProblem, expansionOf: (n: number) => Expansion): (n: number) => RemainderBound {
+function bounder(problem: NeededProblem, expansionOf: (n: number) => Expansion): (n: number, settled?: number) => RemainderBound {
   const cache: ModelCache = new Map();
-  return (n) => {
+  return (n, settled) => {
     const expansion = expansionOf(n);
-    return bound({ expansion, interval: problem.interval, measure: problem.measure, assumptions: problem.assumptions, budget: problem.budget }, cache, 2 * n + 40);
+    return bound({ expansion, interval: problem.interval, measure: problem.measure, assumptions: problem.assumptions, budget: problem.budget, ...(settled ? { settled } : {}) }, cache, 2 * n + 40);
   };
+}
+
+/** Ratios of upper to lower bound asked for in turn where the tolerance lies between the two. */
+const SHARPER = [1 + 2 ** -16, 1 + 2 ** -24, 1 + 2 ** -32];
+
+/** The bound, sharpened until the tolerance is not between its two sides or nothing is gained. */
+function decided(boundOf: (n: number, settled?: number) => RemainderBound, n: number, tolerance: Rational): RemainderBound {
+  let result = boundOf(n);
+  for (const settled of SHARPER) {
+    const { upperRational: upper, lowerRational: lower } = result;
+    if (upper === null || lower === null || Q.compare(upper, tolerance) <= 0 || Q.compare(lower, tolerance) > 0) break;
+    // Far apart: the method does not reach, and more of it will not either.
+    if (Q.compare(upper, Q.multiply(lower, Q.rational(11, 10))) > 0) break;
+    result = boundOf(n, settled);
+  }
+  return result;
 }
 
 /** Bounds for 1..n terms; stops where the sum is exact. */
@@ -83,7 +99,7 @@ export function termsNeededFor(problem: NeededProblem, tolerance: Rational): Ter
     const quick = endError(expansion);
     let size = quick === null ? Infinity : logarithm(quick);
     if (quick === null || Q.compare(quick, tolerance) <= 0) {
-      const result = boundOf(n);
+      const result = decided(boundOf, n, tolerance);
       if (result.upperRational === null) {
         // Poles at the point go away with more terms; others never do.
         unbounded = result;

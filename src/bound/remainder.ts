@@ -16,7 +16,6 @@ import type { BoundProblem, Measure, RemainderBound } from './types.ts';
 
 /** Upper over lower bound that counts as settled. */
 const SETTLED = 1.001;
-const SLACK = 4e-4;
 const EXTRA = 14;
 const DIGITS = 7;
 
@@ -34,7 +33,14 @@ interface Result {
 /** Local models serve every number of terms; a ladder keeps them between its rows. */
 export type ModelCache = Map<string, { readonly length: number; readonly local: unknown }>;
 
-export function bound(problem: BoundProblem, cache: ModelCache = new Map(), lengthHint = 0): RemainderBound {
+/** A bound problem with the ratio of upper to lower bound to stop at, where the usual one does not decide. */
+export type SharpProblem = BoundProblem & { readonly settled?: number };
+const settledOf = (problem: SharpProblem): number => problem.settled ?? SETTLED;
+/** Relative slack of suprema: the rest of what is allowed is left to tails and rounding. */
+const slackOf = (problem: SharpProblem): number => 0.4 * (settledOf(problem) - 1);
+const limitOf = <T>(r: Numbers<T>['r'], lower: T, problem: SharpProblem): T => r.multiply(lower, r.fromRational(Q.fromDouble(1 + 0.9995 * (settledOf(problem) - 1))));
+
+export function bound(problem: SharpProblem, cache: ModelCache = new Map(), lengthHint = 0): RemainderBound {
   const { expansion, assumptions, budget } = problem;
   if (expansion.exact && !expansion.left) return { value: '0', lower: '0', upperRational: Q.ZERO, lowerRational: Q.ZERO, method: 'the sum is the function', proof: ['The sum equals the function on the whole side.'] };
   const variable = variableName(expansion);
@@ -44,7 +50,7 @@ export function bound(problem: BoundProblem, cache: ModelCache = new Map(), leng
   for (const name of missing) {
     const scaled = scaleOut(problem, name, variable);
     if (scaled === null) continue;
-    const inner = bound(scaled.problem, new Map(), lengthHint);
+    const inner = bound({ ...scaled.problem, settled: problem.settled }, new Map(), lengthHint);
     const factor = inner.factor ? build.product(scaled.factor, inner.factor) : scaled.factor;
     const free = build.isOneNumber(factor);
     return { ...inner, ...(free ? {} : { factor }), proof: [`f, the sum and the interval scale alike in ${name}; the bound is that for ${name} = 1${free ? '' : ' times the factor'}.`, ...inner.proof] };
@@ -64,7 +70,7 @@ export function bound(problem: BoundProblem, cache: ModelCache = new Map(), leng
   };
   const check = (): void => budget.check();
   requireReal(segments, variable, parameters);
-  const settled = (result: Result | null): boolean => result !== null && (result.unbounded === true || (result.upper !== null && ratioOf(result) <= SETTLED));
+  const settled = (result: Result | null): boolean => result !== null && (result.unbounded === true || (result.upper !== null && ratioOf(result) <= settledOf(problem)));
   const memory = { cache, lengthHint };
   improve(run(doubles(parameters), segments, problem, variable, check, memory));
   let precision = 128;
@@ -101,8 +107,8 @@ function requireReal(segments: readonly Segment[], variable: string, parameters:
   }
 }
 
-const MOST_BOXES = 40;
-const BOX_SLACK = 1.005;
+const MOST_BOXES = 64;
+const BOX_SLACK = 1.0008;
 
 /** The supremum over the parameters too: lower bounds at the corners of their box, upper bounds on halves of it where the two differ. */
 function overParameters(parameters: ParameterBalls, start: Result | null, solve: (box: ParameterBalls) => Result | null): Result | null {
@@ -200,12 +206,12 @@ function withKnownCoefficients<T>(numbers: Numbers<T>, given: readonly Segment[]
   return { n: withValues(numbers, values), segments: given.map((segment) => ({ ...segment, expansion: replaced.get(segment.expansion) ?? segment.expansion })) };
 }
 
-function run<T>(numbers: Numbers<T>, given: readonly Segment[], problem: BoundProblem, variable: string, check: () => void, memory: Memory): Result | null {
+function run<T>(numbers: Numbers<T>, given: readonly Segment[], problem: SharpProblem, variable: string, check: () => void, memory: Memory): Result | null {
   const { n, segments } = withKnownCoefficients(numbers, given);
   const { r } = n;
   const { measure } = problem;
   const length = n.precision <= 53 ? 14 : Math.min(40, 14 + Math.floor(n.precision / 16));
-  const options = { variable, measure, slack: SLACK, most: n.precision <= 53 ? 400 : 120, length, check };
+  const options = { variable, measure, slack: slackOf(problem), most: n.precision <= 53 ? 400 : 120, length, check };
   let lower = r.zero;
   let upper: T = r.zero;
   const steps: string[] = [];
@@ -327,7 +333,7 @@ interface Unbounded {
 }
 
 /** The segment that starts at the point of expansion: the whole of it by the local model, or a part of it with the rest left to pieces. */
-function atPoint<T>(segment: Segment, n: Numbers<T>, problem: BoundProblem, variable: string, lower: T, check: () => void, memory: Memory): Near<T> | Unbounded | null {
+function atPoint<T>(segment: Segment, n: Numbers<T>, problem: SharpProblem, variable: string, lower: T, check: () => void, memory: Memory): Near<T> | Unbounded | null {
   const { r } = n;
   const base = denominatorOf(segment.expansion);
   if (base === null || !isPowerSum(segment.expansion)) return null;
@@ -372,12 +378,12 @@ function atPoint<T>(segment: Segment, n: Numbers<T>, problem: BoundProblem, vari
           const place = pointExpression(segment);
           return { kind: 'unbounded', place, steps: ['The remainder has a pole at the point of expansion: the sum does not contain every term with a negative power.'] };
         }
-        const result = supremumOfModel(r, g, { from: local.from, to: local.to, floor: settledLower, slack: SLACK / 4, check });
+        const result = supremumOfModel(r, g, { from: local.from, to: local.to, floor: settledLower, slack: slackOf(problem) / 4, check });
         settledLower = r.lowerEnd(r.maximum(settledLower, result.lower));
-        const limit = r.multiply(settledLower, r.fromRational({ num: BigInt(Math.round(SETTLED * 2 ** 30) - 2 ** 19), den: 1n << 30n }));
+        const limit = limitOf(r, settledLower, problem);
         // Sets of parameter values widen every coefficient; there the tail decides, and the box of parameters is divided instead.
-        const good = n.wide ? !tailMatters(r, result) : !r.isPositive(r.subtract(result.upper, limit));
-        if (!good && attempt < 2 && tailMatters(r, result)) {
+        const good = n.wide ? !tailMatters(r, result, problem) : !r.isPositive(r.subtract(result.upper, limit));
+        if (!good && attempt < 2 && tailMatters(r, result, problem)) {
           length += EXTRA;
           continue;
         }
@@ -413,8 +419,8 @@ function withLogarithms<T>(r: Numbers<T>['r'], rest: LogModel<T>, f: LogModel<T>
   return quotient === null ? null : r.upperEnd(r.absolute(quotient));
 }
 
-function tailMatters<T>(r: Numbers<T>['r'], result: { readonly upper: T; readonly tail: T }): boolean {
-  return r.isPositive(r.subtract(r.multiply(result.tail, r.fromInteger(20_000)), result.upper));
+function tailMatters<T>(r: Numbers<T>['r'], result: { readonly upper: T; readonly tail: T }, problem: SharpProblem): boolean {
+  return r.isPositive(r.subtract(r.multiply(result.tail, r.fromInteger(Math.round(20 / (settledOf(problem) - 1)))), result.upper));
 }
 
 function describeLocal<T>(local: Local<T>, order: number, upper: T, tail: T, n: Numbers<T>, show: (x: T) => string, cut: number): readonly string[] {
@@ -486,7 +492,7 @@ function reachesLocalEnd(segment: Segment): boolean {
 }
 
 /** f and the sum by models at the local end and their difference, coarse: for infinite ends that are not the point, and for expansions with a prefactor or on another scale. */
-function byDifference<T>(segment: Segment, sum: Expression, n: Numbers<T>, problem: BoundProblem, variable: string, lower: T, check: () => void): Near<T> | Unbounded | null {
+function byDifference<T>(segment: Segment, sum: Expression, n: Numbers<T>, problem: SharpProblem, variable: string, lower: T, check: () => void): Near<T> | Unbounded | null {
   const { r } = n;
   const settled = (x: T): boolean => !r.isPositive(r.subtract(x, lower));
   if (problem.measure === 'relative' && segment.expansion.prefactor !== null) {
@@ -526,8 +532,8 @@ function byDifference<T>(segment: Segment, sum: Expression, n: Numbers<T>, probl
         const place = segment.upper === null ? infinity : segment.lower === null ? build.negation(infinity) : pointExpression(segment);
         return { kind: 'unbounded', place, steps: ['f - sum grows without bound at the end of the interval.'] };
       }
-      const result = supremumOfModel(r, g, { from: local.from, to: local.to, floor: lower, slack: SLACK / 4, check });
-      const limit = r.multiply(r.maximum(lower, result.lower), r.fromRational({ num: BigInt(Math.round(SETTLED * 2 ** 30) - 2 ** 19), den: 1n << 30n }));
+      const result = supremumOfModel(r, g, { from: local.from, to: local.to, floor: lower, slack: slackOf(problem) / 4, check });
+      const limit = limitOf(r, r.maximum(lower, result.lower), problem);
       if (!r.isPositive(r.subtract(result.upper, limit)) || cut === 11) return done(result.upper, result.lower);
       break;
     }

@@ -96,6 +96,8 @@ function problemOf(request: FitRequest, target: Expression, variable: string, so
     method: request.method ?? 'minimax',
     pieces: request.pieces ?? 1,
     ...(second.value ? { second: second.value } : {}),
+    ...(request.assertion ? { assertion: true } : {}),
+    ...(request.words ? { words: request.words } : {}),
     ...(request.reduction ? { reduction: request.reduction } : {}),
     intervalText: [plainEnd(first[0]), plainEnd(first[1])],
     ...(request.basis ? { basis: request.basis } : {}),

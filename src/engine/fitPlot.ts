@@ -40,7 +40,9 @@ function errorAt(found: Fit, { function: f, variable, measure, format }: FitProb
 
 function horner(terms: Fit['terms'], u: Ball): Ball {
   let [sum, reached] = [real.ZERO, terms.reduce((most, t) => Math.max(most, t.power), 0)];
-  const byPower = new Map(terms.map((t) => [t.power, t.value]));
+  const byPower = new Map<number, Rational>();
+  // Two words of one coefficient are two terms of one power.
+  for (const { power, value } of terms) byPower.set(power, Q.add(byPower.get(power) ?? Q.ZERO, value));
   for (; reached >= 0; reached -= 1) sum = real.add(real.multiply(sum, u, BITS), real.fromRational(byPower.get(reached) ?? Q.ZERO, BITS), BITS);
   return sum;
 }

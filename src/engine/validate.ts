@@ -69,6 +69,8 @@ const SPECIFIC: Readonly<Record<Request['ask'], Readonly<Record<string, Check>>>
     result: oneOf('function', 'expression'),
     details: texts,
     intervals: (v) => (typeof v === 'object' && v !== null && !Array.isArray(v) && Object.keys(v).length >= 1 && Object.keys(v).length <= 2 && Object.values(v).every((item) => ends(item) === null) ? null : 'must map one or two variables to lists of two ends'),
+    words: count(1, 2),
+    assertion: flag,
     reduction: oneOf('auto', 'none', 'always'),
     pieces: (v) => (v === 'auto' ? null : count(1, 1000)(v)),
   },

@@ -1,9 +1,9 @@
 /** A program as code: a function (or one expression) with a comment that states what was proved and under which assumptions. */
-import { build, type Expression, mapChildren, type Rational } from '../expression/index.ts';
+import { build, type Expression, mapChildren, Q, type Rational } from '../expression/index.ts';
 import { Declined } from '../outcome.ts';
 import { type CodeOptions, codeLanguage, commentLines, functionCode, type LanguageRow, type Statement, toCode } from '../write/index.ts';
 import type { FloatFormat } from './format.ts';
-import { formatByName } from './format.ts';
+import { formatByName, roundTo, ulp } from './format.ts';
 import type { Arithmetic, Program } from './program.ts';
 import { wrapCode } from './wrap.ts';
 
@@ -25,6 +25,8 @@ export interface FitCodeRequest {
   readonly comment: readonly string[];
   /** One expression in the variable instead of a function. */
   readonly expression: boolean;
+  /** What the function asserts of its parameters. */
+  readonly ranges?: readonly ParameterRange[];
 }
 
 /** The language row for an emit name. Throws Declined for one that code is not written in. */
@@ -80,12 +82,13 @@ function inlined({ steps, result }: Program): Expression {
 }
 
 /** Throws Declined where the language cannot say it (no such float type, for one). */
-export function fitCode({ branches, variable, language, format, name, comment, expression }: FitCodeRequest): FitCodeText {
+export function fitCode({ branches, variable, language, format, name, comment, expression, ranges }: FitCodeRequest): FitCodeText {
   const row = rowFor(language);
   const options: CodeOptions = { language, format: format.name, literal: { hexadecimal: 'where inexact' } };
   const [first] = branches;
   if (!first) throw new RangeError('no program');
   if (expression) {
+    if (ranges) throw new Declined('bad-request', 'An assertion needs a function; ask for the result function.');
     if (branches.length > 1) throw new Declined('bad-request', 'Several pieces need a function with branches; ask for the result function.');
     const written = toCode(inlined(first.program), options);
     if (!written.ok) throw new Declined(written.error.code, written.error.message);
@@ -98,7 +101,27 @@ export function fitCode({ branches, variable, language, format, name, comment, e
     if (k === branches.length - 1) return statements(program);
     return [{ kind: 'if', condition: { kind: 'relation', sides: [build.symbol(variable), build.number(below)], relations: ['<='] }, then: statements(program) }];
   });
-  return wholeFunction({ name, parameters: [variable], body, language, format, comment });
+  return wholeFunction({ name, parameters: [variable], body, language, format, comment, ...(ranges ? { ranges } : {}) });
+}
+
+/** A closed range of a parameter. */
+export interface ParameterRange {
+  readonly name: string;
+  readonly low: Rational;
+  readonly high: Rational;
+  /** As it is written: `[-1, pi/4]`. */
+  readonly text: string;
+}
+
+/** The range with floats as ends, none outside it. */
+function assertion({ name, low, high, text }: ParameterRange, format: FloatFormat): Statement {
+  const inward = (end: Rational, way: 1 | -1): Rational => {
+    const near = roundTo(end, format) ?? end;
+    return Q.compare(near, end) * way >= 0 ? near : (roundTo(Q.add(near, Q.multiply(Q.rational(way), ulp(near, format))), format) ?? near);
+  };
+  const x = build.symbol(name);
+  const relation = (sign: '>=' | '<=', end: Rational): Expression => ({ kind: 'relation', sides: [x, build.number(end)], relations: [sign] });
+  return { kind: 'assert', conditions: [relation('>=', inward(low, 1)), relation('<=', inward(high, -1))], message: `${name} outside ${text}` };
 }
 
 export interface FunctionRequest {
@@ -108,16 +131,17 @@ export interface FunctionRequest {
   readonly language: string;
   readonly format: FloatFormat;
   readonly comment: readonly string[];
+  readonly ranges?: readonly ParameterRange[];
 }
 
 /** A function of floats with its comment, its parameters converted to the format first where the language declares no types. */
-export function wholeFunction({ name, parameters, body, language, format, comment }: FunctionRequest): FitCodeText {
+export function wholeFunction({ name, parameters, body, language, format, comment, ranges = [] }: FunctionRequest): FitCodeText {
   const row = rowFor(language);
   const options: CodeOptions = { language, format: format.name, literal: { hexadecimal: 'where inexact' } };
   // Without declared types the argument decides in which format the operations round.
   const untyped = row.floats[format.name]?.wrap !== undefined && row.floats[format.name]?.name === '';
   const converted = untyped ? parameters.map((p): Statement => ({ kind: 'let', name: p, value: build.symbol(p), rounded: true })) : [];
-  const written = functionCode({ name, parameters, body: [...converted, ...body] }, options);
+  const written = functionCode({ name, parameters, body: [...converted, ...ranges.map((range) => assertion(range, format)), ...body] }, options);
   if (!written.ok) throw new Declined(written.error.code, written.error.message);
   const text = [...commentLines(row.id, comment), ...written.value.text.split('\n').flatMap((line) => wrapCode(line, row))].join('\n');
   const { imports } = written.value;

@@ -3,7 +3,7 @@ import { build, type Expression, Q, type Rational } from '../expression/index.ts
 import { attempt, type Budget, Declined, type Outcome } from '../outcome.ts';
 import { real } from '../rigorous/index.ts';
 import { codeLanguage, type PolynomialTerm, type Statement, toPlain } from '../write/index.ts';
-import { codeFormat, type FitCodeText, fitCode, functionName, fusing, machineArithmetic, rowFor, wholeFunction } from './code.ts';
+import { codeFormat, type FitCodeText, fitCode, functionName, fusing, machineArithmetic, type ParameterRange, rowFor, wholeFunction } from './code.ts';
 import { fixedCode, requireIntegers } from './fixedCode.ts';
 import { fitFixedPoint } from './fixedFit.ts';
 import type { FixedFormat, FloatFormat, NumberFormat } from './format.ts';
@@ -35,11 +35,15 @@ export interface FitProblem {
   readonly basis?: Basis;
   /** Leading coefficients of the expansion at 0 that are kept as they are; 0 must lie in the interval. */
   readonly exact?: number;
+  /** Floats that the leading coefficient is the sum of (two terms of one power); absent: two where the tolerance is not kept with one. */
+  readonly words?: 1 | 2;
   /** Whether the argument is reduced first: `auto` (default) where a plain polynomial would need a high degree for the tolerance; the degree asked for is then that on the small interval. */
   readonly reduction?: 'auto' | 'none' | 'always';
   /** How the interval is written in the comment. */
   readonly intervalText: readonly [string, string];
   readonly result?: 'function' | 'expression';
+  /** The function asserts that its arguments lie in the interval. */
+  readonly assertion?: boolean;
   /** Of hypot(x, y) and atan2(y, x): the other variable; `variable` is either of the two. */
   readonly second?: SecondVariable;
 }
@@ -155,7 +159,7 @@ function reducedFit(problem: FitProblem, parameters: readonly string[], whole: P
   const { format } = whole;
   const assumptions = assumptionsOf(problem, format);
   const comment = commentOf(problem, format, error, assumptions, `By reduction: ${method}.`);
-  const code = wholeFunction({ name: functionName(word === undefined ? wordsFor(problem.function) : [word, 'approximation'], row.id), parameters, body, language: problem.language, format: written, comment });
+  const code = wholeFunction({ name: functionName(word === undefined ? wordsFor(problem.function) : [word, 'approximation'], row.id), parameters, body, language: problem.language, format: written, comment, ...rangesOf(problem, parameters) });
   const list = kernels.map(({ function: f, low, high, found }): KernelFit => ({ function: f, low, high, terms: found.terms, degree: found.degree, centre: found.centre }));
   return {
     terms: first.found.terms,
@@ -198,6 +202,7 @@ function plain(problem: FitProblem, whole: PolynomialProblem, written: FloatForm
     name: functionName(wordsFor(problem.function), language),
     comment,
     expression: problem.result === 'expression',
+    ...rangesOf(problem, [variable]),
   });
   const degree = Math.max(...parts.map((p) => p.found.degree));
   const pieces = parts.length === 1 ? {} : { pieces: parts.map(({ low, high, found }) => ({ low, high, terms: found.terms, degree: found.degree, centre: found.centre, error: found.error })) };
@@ -215,13 +220,14 @@ function rational(problem: FitProblem, shared: PolynomialProblem, format: FloatF
   const variable = parameterName(problem);
   const program = variable === problem.variable ? found.writtenProgram : renamed(found.writtenProgram, problem.variable, variable);
   const comment = commentOf(problem, format, found.error, assumptions);
-  const code = fitCode({ branches: [{ below: problem.high, program }], variable, language, format: codeFormat(language, format), name: functionName(wordsFor(problem.function), language), comment, expression: problem.result === 'expression' });
+  const code = fitCode({ branches: [{ below: problem.high, program }], variable, language, format: codeFormat(language, format), name: functionName(wordsFor(problem.function), language), comment, expression: problem.result === 'expression', ...rangesOf(problem, [variable]) });
   return { terms: found.numerator, denominator: found.denominator, format, degree: found.degree, centre: found.centre, program: found.writtenProgram, error: found.error, method: methodText(problem), code, assumptions };
 }
 
 function fixedPoint(problem: FitProblem, format: FixedFormat, budget: Budget): Fit {
   const { language } = problem;
   requireIntegers(language, format);
+  if (problem.assertion) throw new Declined('bad-request', 'Fixed-point code is written without an assertion; leave the assertion out.');
   if (problem.method !== 'minimax') throw new Declined('bad-request', 'Fixed-point coefficients are fitted by the method minimax only; leave the method out.');
   if (problem.pieces !== 1) throw new Declined('bad-request', 'Fixed-point fits are made on one interval; ask for each piece by itself.');
   if (problem.result === 'expression') throw new Declined('bad-request', 'Fixed-point code is a function with a helper; ask for the result function.');
@@ -232,6 +238,15 @@ function fixedPoint(problem: FitProblem, format: FixedFormat, budget: Budget): F
   const program = variable === problem.variable ? found.program : renamed(found.program, problem.variable, variable);
   const code = fixedCode(program, variable, format, language, functionName(wordsFor(problem.function), language), commentOf(problem, { name: `fixed point with ${n} bits behind the point`, argument: `multiple of 2^-${n}` }, found.error, assumptions));
   return { terms: found.terms, format, degree: found.degree, centre: Q.ZERO, program, error: found.error, method: methodText(problem), code, assumptions };
+}
+
+/** What the code asserts of its parameters, where that was asked for; of two, in the order of the function's arguments. */
+function rangesOf(problem: FitProblem, parameters: readonly string[]): { readonly ranges?: readonly ParameterRange[] } {
+  if (!problem.assertion) return {};
+  const { second } = problem;
+  const swapped = second && recognisePair(problem.function)?.variables[0] === second.variable;
+  const quantities = second ? (swapped ? [second, problem] : [problem, second]) : [problem];
+  return { ranges: quantities.map(({ low, high, intervalText }, k) => ({ name: parameters[k] ?? 'x', low, high, text: `[${intervalText.join(', ')}]` })) };
 }
 
 const greater = (a: Rational, b: Rational): Rational => (Q.compare(a, b) >= 0 ? a : b);

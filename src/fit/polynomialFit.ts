@@ -7,7 +7,7 @@ import { level } from './exchange.ts';
 import { fromFixed } from './fixed.ts';
 import { binaryExponent, type FloatFormat, isRepresentable, powerOfTwo, roundTo } from './format.ts';
 import { shiftedResidual } from './grid.ts';
-import { type Arithmetic, canStandApart, polynomialProgram, type Program } from './program.ts';
+import { type Arithmetic, canStandApart, polynomialProgram, type Program, twoWordProgram } from './program.ts';
 import { certifiedTerms, type CertifiedPolynomial, errorParts, type EvaluationProof, type FitMeasure, type InheritedError, type ProofProblem, type ProvedError, proveProgram } from './proof.ts';
 import { type Basis, basisFor, bestOfDegree, type Found, leastDegree, leastWithin, nextDegree, type Search } from './search.ts';
 import { type FitTarget, prepareKept, prepareTarget } from './target.ts';
@@ -33,6 +33,8 @@ export interface PolynomialProblem {
   /** The code calls the language's multiply-add, which may still round twice. */
   readonly writtenFma: boolean;
   readonly basis?: Basis;
+  /** Floats that the leading coefficient is the sum of; absent: two where the tolerance is not kept with one. */
+  readonly words?: 1 | 2;
   /** Leading coefficients of the expansion at 0 that are kept as they are. */
   readonly exact?: number;
   readonly method: 'minimax' | 'taylor' | 'economized';
@@ -67,8 +69,8 @@ export function fitPolynomial(problem: PolynomialProblem, budget: Budget): Polyn
   if (method === 'taylor' && !atZero) return about(middle, problem, budget);
   try {
     const plain = about(Q.ZERO, problem, budget);
-    const { evaluation, total } = plain.error;
-    if (atZero || problem.tolerance || !Q.isZero(plain.centre) || Q.compare(Q.multiply(evaluation, Q.rational(2)), total) <= 0) return plain;
+    const { evaluation, rounding, total } = plain.error;
+    if (atZero || problem.tolerance || !Q.isZero(plain.centre) || Q.compare(Q.multiply(Q.add(evaluation, rounding), Q.rational(2)), total) <= 0) return plain;
     // Rounding dominates: about the middle the powers of x are smaller.
     try {
       const shifted = about(middle, problem, budget);
@@ -160,12 +162,20 @@ const shiftBy = (coefficients: readonly Rational[], { powers }: { readonly power
 /** Rounds the coefficients, certifies the polynomial and takes the program with the smaller proven error. */
 function candidate(setting: Setting, found: Found, budget: Budget): Candidate {
   const { problem } = setting;
+  if (problem.words === 2) {
+    const two = doublyLed(setting, found, budget);
+    if (!two) throw new Declined('bad-request', 'The leading coefficient of this polynomial is a float already, or cannot be split in two words; leave words out.');
+    return withTwoWords(setting, found, two, null, budget);
+  }
   const plain = bestProgram(setting, found, roundedTerms(setting, found, budget), null, budget);
   const enough = problem.tolerance && Q.compare(plain.proof.total, problem.tolerance) <= 0;
   // Where rounding dominates, leading coefficients that multiply exactly can save most of it at a small cost in approximation.
   if (enough || problem.method === 'taylor' || (problem.measure !== 'ulp' && Q.compare(plain.proof.evaluation, plain.polynomial.whole.upper) < 0)) return plain;
   const apart = exactlyLed(setting, found, budget);
-  return apart && !apart.every((t, k) => Q.equal(t.value, plain.terms[k]?.value ?? Q.ZERO)) ? bestProgram(setting, found, apart, plain, budget) : plain;
+  const best = apart && !apart.every((t, k) => Q.equal(t.value, plain.terms[k]?.value ?? Q.ZERO)) ? bestProgram(setting, found, apart, plain, budget) : plain;
+  if (problem.words === 1 || (!problem.tolerance || problem.measure === 'absolute' || Q.compare(best.proof.total, problem.tolerance) <= 0)) return best;
+  const two = doublyLed(setting, found, budget);
+  return two ? withTwoWords(setting, found, two, best, budget) : best;
 }
 
 function roundedTerms({ problem, search }: Setting, found: Found, budget: Budget): readonly PolynomialTerm[] {
@@ -190,14 +200,40 @@ function exactlyLed({ problem, search }: Setting, { problem: { grid, powers }, r
   if (Q.compare(Q.absolute(Q.subtract(near, value)), Q.multiply(Q.absolute(value), Q.rational(1, 1000))) > 0) return null;
   const first = lead === 1 ? roundTo(exact[0] ?? Q.ZERO, problem.format) : null;
   if (lead === 1 && !first) return null;
-  const fixed = first ? [first, near] : [near];
-  const residual = fixed.reduce((r, v, k) => shiftedResidual(r, grid, powers[k] ?? 0, Q.subtract(v, exact[k] ?? Q.ZERO)), result.residual);
+  return withFixed(problem, { problem: { grid, powers }, result, degree: 0 }, first ? [first, near] : [near], order, budget);
+}
+
+/** The first coefficients as given, the rest fitted and rounded against what these leave of the function; null where that does not settle. */
+function withFixed({ format }: PolynomialProblem, { problem: { grid, powers }, result }: Found, fixed: readonly Rational[], order: number, budget: Budget): readonly PolynomialTerm[] | null {
+  const residual = fixed.reduce((r, v, k) => shiftedResidual(r, grid, powers[k] ?? 0, Q.subtract(v, fromFixed(result.coefficients[k] ?? 0n, grid.bits))), result.residual);
   const rest = level(grid, powers.slice(fixed.length), result.coefficients.slice(fixed.length), residual, budget);
   if (!rest) return null;
-  // The rest is rounded against what the fixed coefficients leave of the function.
   const remaining: Found = { problem: { grid, powers: powers.slice(fixed.length) }, result: rest, degree: 0 };
-  const rounded = roundCoefficients(remaining, problem.format, false, budget);
+  const rounded = roundCoefficients(remaining, format, false, budget);
   return rounded && shiftBy([...fixed, ...rounded.values], { powers }, order);
+}
+
+/** The leading coefficient as the sum of two floats, two terms of one power; null where it is one float or the rest does not settle. */
+function doublyLed({ problem, search }: Setting, { problem: { grid, powers }, result }: Found, budget: Budget): readonly PolynomialTerm[] | null {
+  const { order, kept } = search.target;
+  const [first] = result.coefficients;
+  if (kept.length > 0 || first === undefined || powers.length < 2) return null;
+  const value = fromFixed(first, grid.bits);
+  const high = roundTo(value, problem.format);
+  const low = high && roundTo(Q.subtract(value, high), problem.format);
+  if (!high || !low || Q.isZero(low) || Q.isZero(high)) return null;
+  const terms = withFixed(problem, { problem: { grid, powers }, result, degree: 0 }, [Q.add(high, low)], order, budget);
+  const [lead, ...rest] = terms ?? [];
+  return lead ? [{ power: lead.power, value: high }, { power: lead.power, value: low }, ...rest] : null;
+}
+
+function withTwoWords({ problem, search, proof }: Setting, found: Found, terms: readonly PolynomialTerm[], known: Candidate | null, budget: Budget): Candidate {
+  const { variable, form, fma, writtenFma } = problem;
+  const { zero } = search.target;
+  const polynomial = certifiedTerms(terms, proof, budget);
+  const program = twoWordProgram(terms, variable, zero, { form, fma });
+  const next: Candidate = { found, terms, polynomial, program, writtenProgram: twoWordProgram(terms, variable, zero, { form, fma: writtenFma }), proof: proveProgram(program, polynomial, proof, budget) };
+  return known && Q.compare(known.proof.total, next.proof.total) <= 0 ? known : next;
 }
 
 function bestProgram({ problem, search, proof }: Setting, found: Found, terms: readonly PolynomialTerm[], known: Candidate | null, budget: Budget): Candidate {

@@ -42,6 +42,18 @@ export function polynomialProgram(terms: readonly PolynomialTerm[], variable: st
   return { steps: [...first, ...form.steps], result: form.result };
 }
 
+/** The first two terms are words of one leading coefficient: the first word's part is added last, so that neither the coefficient nor the sum before it rounds at its size. */
+export function twoWordProgram(terms: readonly PolynomialTerm[], variable: string, centre: Rational, { form, fma }: Pick<PolynomialProgramShape, 'form' | 'fma'>): Program {
+  const [high, ...rest] = terms;
+  const inner = polynomialProgram(rest, variable, centre, { form, fma, leadingApart: false });
+  if (!high) return inner;
+  const argument = Q.isZero(centre) ? build.symbol(variable) : build.symbol(stepName('t', variable));
+  const factors = Array.from({ length: high.power }, () => argument);
+  const first = build.number(high.value);
+  if (high.power === 0) return { steps: inner.steps, result: build.sum(first, inner.result) };
+  return { steps: inner.steps, result: fma ? build.call('fma', build.product(...factors), first, inner.result) : build.sum(build.product(...factors, first), inner.result) };
+}
+
 /** Whether the leading power has a coefficient that multiplies exactly, so that it can be added last. */
 export function canStandApart(terms: readonly PolynomialTerm[]): boolean {
   const kept = terms.filter((t) => !Q.isZero(t.value));

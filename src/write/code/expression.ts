@@ -39,6 +39,8 @@ export const formatOf = (options: CodeOptions, row: LanguageRow): FloatFormat =>
 export interface CodeWriter {
   write(e: Expression): Piece;
   readonly imports: ReadonlySet<string>;
+  /** Adds lines that the file needs at its head. */
+  readonly require: (imports: readonly string[]) => void;
   readonly row: LanguageRow;
   readonly format: FloatFormat;
 }
@@ -55,6 +57,7 @@ const enclosed = (piece: Piece, binding: Binding): string => (piece.binding >= b
 
 class Writer implements CodeWriter {
   readonly imports = new Set<string>();
+  readonly require = (imports: readonly string[]): void => imports.forEach((line) => this.imports.add(line));
   readonly row: LanguageRow;
   readonly format: FloatFormat;
   readonly #options: CodeOptions;

@@ -10,6 +10,8 @@ export type Statement =
   | { readonly kind: 'let'; readonly name: string; readonly value: Expression; readonly rounded?: boolean }
   /** A condition (a relation, or a conjunction in order) under which the inner statements run; they end with a `return`. */
   | { readonly kind: 'if'; readonly condition: Expression; readonly then: readonly Statement[] }
+  /** Stops where a condition does not hold, in the language's way (removed from release builds where the language does so). */
+  | { readonly kind: 'assert'; readonly conditions: readonly Expression[]; readonly message: string }
   | { readonly kind: 'return'; readonly value: Expression; readonly rounded?: boolean };
 
 export interface FunctionText {
@@ -105,6 +107,7 @@ function writeStatements(body: readonly Statement[], writer: CodeWriter, shape: 
   for (const statement of body) {
     if (statement.kind === 'let' && statement.value.kind === 'piecewise' && (!writer.row.choose || writer.row.id === 'fortran')) lines.push(...assigned(statement.name, statement.value.branches, writer, shape, type).map((line) => indent + line));
     else if (statement.kind === 'let') lines.push(indent + shape.assign(statement.name, type, converted(statement, writer)));
+    else if (statement.kind === 'assert') lines.push(...asserted(statement.conditions.map((c) => writer.write(c).text), statement.message, writer).map((line) => indent + line));
     else if (statement.kind === 'return') lines.push(...shape.result(converted(statement, writer), name).map((line) => indent + line));
     else {
       lines.push(indent + shape.open(writer.write(statement.condition).text));
@@ -112,6 +115,38 @@ function writeStatements(body: readonly Statement[], writer: CodeWriter, shape: 
       if (shape.close !== null) lines.push(indent + shape.close);
     }
   }
+}
+
+type Assertion = (conditions: readonly string[], message: string) => { readonly lines: readonly string[]; readonly imports?: readonly string[] };
+const both = (conditions: readonly string[], and = ' && '): string => conditions.join(and);
+const thrown: Assertion = (c, message) => ({ lines: [`if (!(${both(c)})) throw new RangeError('${message}');`] });
+/** Null where the language cannot stop. */
+const ASSERTIONS: Readonly<Record<CodeLanguage, Assertion | null>> = {
+  c: (c) => ({ lines: [`assert(${both(c)});`], imports: ['#include <assert.h>'] }),
+  cpp: (c) => ({ lines: [`assert(${both(c)});`], imports: ['#include <cassert>'] }),
+  rust: (c, message) => ({ lines: [`debug_assert!(${both(c)}, "${message}");`] }),
+  python: (c, message) => ({ lines: [`assert ${both(c, ' and ')}, "${message}"`] }),
+  javascript: thrown,
+  typescript: thrown,
+  java: (c, message) => ({ lines: [`assert ${both(c)} : "${message}";`] }),
+  csharp: (c, message) => ({ lines: [`System.Diagnostics.Debug.Assert(${both(c)}, "${message}");`] }),
+  go: (c, message) => ({ lines: [`if !(${both(c)}) {`, `\tpanic("${message}")`, '}'] }),
+  julia: (c, message) => ({ lines: [`@assert ${both(c)} "${message}"`] }),
+  fortran: (c, message) => ({ lines: [`if (.not. (${both(c, ' .and. ')})) error stop "${message}"`] }),
+  matlab: (c, message) => ({ lines: [`assert(${both(c)}, '${message}');`] }),
+  r: (c) => ({ lines: [`stopifnot(${c.join(', ')})`] }),
+  glsl: null,
+  hlsl: null,
+  kotlin: (c, message) => ({ lines: [`require(${both(c)}) { "${message}" }`] }),
+  swift: (c, message) => ({ lines: [`precondition(${both(c)}, "${message}")`] }),
+};
+
+function asserted(conditions: readonly string[], message: string, { row, require }: CodeWriter): readonly string[] {
+  const assertion = ASSERTIONS[row.id];
+  if (!assertion) throw new Declined('bad-request', `${row.title} has no assertions; leave the assertion out.`);
+  const { lines, imports } = assertion(conditions, message);
+  require(imports ?? []);
+  return lines;
 }
 
 /** A choice without a conditional expression: the value of the last branch, overwritten from the last condition to the first. */

@@ -236,8 +236,12 @@ function foldMonomial(table: KernelTable, monomial: Monomial): { content: Ration
         for (let j = 0; j < -count; j += 1) numerator = multiplyReduced(table, numerator, cleared.cofactor);
       } else {
         const sign = contentOf(relation.value);
+        // A radicand such as b (2 - b) has a monomial of its own, which must not hide among the factors: they are taken for coprime.
+        const outside = monomialContent(relation.value);
+        const rest = isUnit(outside) ? relation.value : shiftPolynomial(relation.value, invertMonomial(outside));
         content = Q.multiply(content, Q.power({ num: sign, den: 1n }, count));
-        for (const f of squareFreeFactors(divideByInteger(relation.value, sign), table.check)) denominator.push({ polynomial: f.polynomial, exponent: -count * f.exponent });
+        m = multiplyMonomials(m, { kernels: outside.kernels, exponents: outside.exponents.map((x) => multiplyExponents(x, count)) });
+        for (const f of squareFreeFactors(divideByInteger(rest, sign), table.check)) denominator.push({ polynomial: f.polynomial, exponent: -count * f.exponent });
       }
       break;
     }

@@ -56,6 +56,7 @@ function inOneArgument(s: Session, d: FunctionDescription, args: readonly Multi[
     }
     if (sign === 'complex' || sign === 0) throw new Declined('no-expansion', `${title(d)} is not expanded towards complex infinity; use a real direction.`);
     const form = d.local?.(trees, index, { kind: 'infinite', argument: z, direction: sign });
+    if (form && !isRealMulti(c, f) && !holdsAround(d.id, sign)) throw new Declined('no-expansion', `${title(d)} is not expanded for a complex argument beside its cut; use a real direction.`);
     if (form) {
       const value = evaluateForm(bind(s, [[z.kind === 'symbol' ? z.name : '', f]]), form, evaluate);
       return form.subdominantDropped ? multiply(c, value, add(c, Q.ONE, beyondAllOrders(c, large))) : value;
@@ -97,6 +98,14 @@ function inOneArgument(s: Session, d: FunctionDescription, args: readonly Multi[
     },
   );
 }
+
+/** Without a cut on the negative real axis: their forms there hold on both sides of it. */
+const SINGLE_VALUED: ReadonlySet<string> = new Set(['erf', 'erfc', 'erfi', 'erfcx', 'dawson', 'gamma', 'digamma', 'airyAi', 'airyBi', 'airyAiPrime', 'airyBiPrime', 'sinIntegral', 'sinhIntegral', 'fresnelS', 'fresnelC', 'cin', 'ein', 'barnesG']);
+/** With a cut on the positive real axis. */
+const CUT_BEYOND_ONE: ReadonlySet<string> = new Set(['polylog', 'hypergeometric', 'boseEinstein', 'legendreChi', 'incompleteBeta', 'regularizedBeta', 'ellipticK', 'ellipticE', 'ellipticKParameter', 'ellipticEParameter']);
+
+/** Whether the form at real infinity also holds for complex arguments on both sides of the axis. */
+const holdsAround = (id: string, direction: 1 | -1): boolean => (direction === 1 ? !CUT_BEYOND_ONE.has(id) : SINGLE_VALUED.has(id));
 
 /** Whether f moves on a faster scale element than its unbounded part. */
 function fasterPart(f: Series, large: Multi): boolean {

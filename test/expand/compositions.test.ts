@@ -55,3 +55,20 @@ test('the sign of a constant that is real by construction', () => {
   const found = expansionOf('\\operatorname{artanh}\\left(\\arctan\\frac{x}{3}\\right)', { at: '1', terms: 1 });
   expect(same(partialSum(found), plain('atanh(atan(1/3))'))).toBe(true);
 });
+
+describe('roots of products with a factor of their own', () => {
+  // By f'' = -(g'' (1 - g^2) + g g'^2)/(1 - g^2)^(3/2) for f = acos g.
+  test('arccos((b - x) x) at 1', () => {
+    const found = expansionOf('\\arccos((b-x)x)', { at: '1', terms: 3 });
+    expect(same(partialSum(found), plain('pi/2 - asin(b - 1) + (2 - b)*(x - 1)/sqrt(b*(2 - b)) + (b^2 - b + 2)*(x - 1)^2/(2*b*sqrt(b*(2 - b)))'))).toBe(true);
+  });
+  test('sums over denominators b and b (2 - b)', () => {
+    expect(same(plain('(b - 2)*(-(b - 1)/(b*sqrt(b*(2 - b)))) - 2/sqrt(b*(2 - b)) + 1/(b - 2) - 1/(b*(b - 2))'), plain('-(b^2 - b + 2)/(b*sqrt(b*(2 - b))) + (b - 1)/(b*(b - 2))'))).toBe(true);
+  });
+});
+
+test('a function is not expanded towards its cut by the form that holds on it: Ei of a complex argument', () => {
+  const found = outcomeOf(latex('\\operatorname{Ei}\\left(\\operatorname{Li}_2(x)\\right)'), { at: 'inf' });
+  expect(found.ok).toBe(false);
+  if (!found.ok) expect(found.error.code).toBe('no-expansion');
+});

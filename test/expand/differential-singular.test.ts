@@ -28,6 +28,9 @@ describe('power series for given values', () => {
     const found = solve("y'' + \\frac{2}{x}y' + y^5 = 0, y(0)=1, y'(0)=1");
     expect(found.ok ? '' : found.error.message).toContain('first derivative');
   });
+  test.each(["y' = \\frac{1}{y}, y(0)=0", "y y' = x + \\sqrt{y}, y(0)=0", "x y' = |y|, y(0)=0"])('%s is no power series and is declined', (text) => {
+    expect(solve(text).ok).toBe(false);
+  });
   test('where logarithms are needed the values are refused', () => {
     const found = solve("x y' = y + x, y(0)=0");
     expect(found.ok ? '' : found.error.message).toContain('logarithms');

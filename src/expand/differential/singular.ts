@@ -42,16 +42,18 @@ class Trial {
     const { context: c, session } = this.side;
     c.budget.check();
     const slots = Array.from({ length: this.order + 1 }, (_, k) => [slot(this.name, k), this.polynomial(known, k)] as const);
-    const value = evaluate(bind(session, slots), this.tree);
+    const value = declinedPlainly(() => evaluate(bind(session, slots), this.tree));
     if (!(value instanceof Series)) {
       yield { exponent: 0, coefficient: value };
       return;
     }
     if (value.element.kind !== 'local') throw notAPowerSeries();
     for (let k = 0; ; k += 1) {
-      const term = value.stream.at(k);
+      const term = declinedPlainly(() => value.stream.at(k));
       if (!term) return;
       if (term.coefficient instanceof Series || !isRational(term.exponent) || term.exponent.den !== 1n || term.order) throw notAPowerSeries();
+      // A condition on the trial coefficient, or another value on the left side: the equation is not analytic in the solution.
+      if (c.notes.sided || [...c.field.needed].some((a) => a.includes(TRIAL))) throw notAPowerSeries();
       yield { exponent: Number(term.exponent.num), coefficient: term.coefficient };
     }
   }
@@ -66,6 +68,16 @@ class Trial {
       before(e);
     }
     return null;
+  }
+}
+
+/** A question about the trial coefficient is none that an assumption could answer. */
+function declinedPlainly<T>(body: () => T): T {
+  try {
+    return body();
+  } catch (error) {
+    if (error instanceof Declined && error.message.includes(TRIAL)) throw notAPowerSeries();
+    throw error;
   }
 }
 
@@ -92,7 +104,8 @@ export function powerSeriesSolution(statement: DifferentialStatement, given: (de
   const first = initial(0);
   if (!first) throw new Declined('needs-assumption', `The point is singular for this equation; give the value of the solution there.`);
   known.push(first);
-  const shift = shiftOf(trial, known, order);
+  const shift = shiftOf(c, trial, known, order);
+  let resonances = 0;
   const next = (k: number): Element => {
     if (known[k] !== undefined) return known[k];
     const target = k + shift;
@@ -106,6 +119,8 @@ export function powerSeriesSolution(statement: DifferentialStatement, given: (de
     if (entry && entry.exponent < target) throw new Declined('no-expansion', 'The equation is too degenerate at this point and these values; choose another point.');
     if (!entry) {
       if (rests.length > 0) throw new Declined('no-expansion', `The solution with these values has logarithms of the distance from the point at power ${k}, or does not exist; choose a regular point.`);
+      resonances += 1;
+      if (resonances > order) throw notAPowerSeries();
       if (wanted) return wanted;
       return c.field.fromExpression({ kind: 'apply', name, args: [about.point as Expression], derivatives: [k] });
     }
@@ -122,13 +137,17 @@ export function powerSeriesSolution(statement: DifferentialStatement, given: (de
 }
 
 /** What is added to the power of a coefficient to get the power at which it enters. */
-function shiftOf(trial: Trial, known: readonly Element[], order: number): number {
-  let least = Infinity;
+function shiftOf(c: Context, trial: Trial, known: readonly Element[], order: number): number {
+  const shifts: number[] = [];
   for (let k = order + 1; k <= 2 * order + 2; k += 1) {
     const entry = trial.entry(known, k, k + order + 8, () => undefined);
-    if (entry) least = Math.min(least, entry.exponent - k);
+    if (!entry) continue;
+    solveLinear(c, entry.coefficient);
+    shifts.push(entry.exponent - k);
   }
-  if (!Number.isFinite(least)) throw new Declined('no-expansion', 'The equation is too degenerate at this point and these values; choose another point.');
+  const least = Math.min(...shifts);
+  // A linear recursion has at most as many exceptional powers as the order.
+  if (shifts.filter((s) => s === least).length < 2) throw new Declined('no-expansion', 'The equation is too degenerate at this point and these values; choose another point.');
   return least;
 }
 

@@ -108,14 +108,15 @@ function independent(found: Evidence, pieces: readonly Expression[], asked: stri
  * A single prime alone (`x' = \gamma(x - vt)`) is a derivative only where the unknown is named, or a value at a point is given.
  * Dots are derivatives in t; primes and fractions in the variable that they name, that is asked for, or that stands in the equation under a usual name (x, t, s, z, ...).
  */
-export function differentialStatement(pieces: readonly Expression[], asked: { readonly unknown?: string; readonly variable?: string }): DifferentialStatement | null {
-  const found = gather(pieces, asked.unknown);
+export function differentialStatement(written: readonly Expression[], asked: { readonly unknown?: string; readonly variable?: string }): DifferentialStatement | null {
+  const found = gather(written, asked.unknown);
   if (found.names.size === 0) return null;
-  const variable = independent(found, pieces, asked.variable);
+  const variable = independent(found, written, asked.variable);
   if (variable === null) return null;
   const names = new Set(found.names.keys());
   if (asked.unknown !== undefined && !names.has(asked.unknown)) return null;
   const reader = new Slots(names, variable);
+  const pieces = written.map((p) => ownNames(p, names));
   const equations: Expression[] = [];
   const initial: InitialValue[] = [];
   const conditions: Expression[] = [];
@@ -140,9 +141,20 @@ export function differentialStatement(pieces: readonly Expression[], asked: { re
   }
   if (equations.length === 0) return null;
   const unknowns = [...names].map((name) => ({ name, order: orderOf(equations, name) })).filter((u) => u.order > 0);
+  if (unknowns.length === 0) return null;
   if (unknowns.some((u) => u.order > MOST_ORDER)) throw new Declined('bad-request', `Derivatives up to order ${MOST_ORDER} are read; this equation has a higher one.`);
   // A place without values at it says where to expand only if it is a number; a name `x = a` of a parameter is not one.
   return { variable, unknowns, equations, initial, point, conditions: [...conditions, ...(place && point === null ? [place] : [])], applied: reader.applied };
+}
+
+/** A letter that is elsewhere a special function (`\psi(0)`, `E(t)`) is here the unknown that it is differentiated as. */
+function ownNames(e: Expression, names: ReadonlySet<string>): Expression {
+  const inner = mapChildren(e, (child) => ownNames(child, names));
+  if (inner.kind !== 'call' || inner.written === undefined || !names.has(inner.written)) return inner;
+  const argument = inner.args[inner.args.length - 1];
+  const [first] = inner.args;
+  const derivative = inner.function === 'polygamma' && first?.kind === 'number' ? Number(first.value.num) : 0;
+  return argument ? { kind: 'apply', name: inner.written, args: [argument], derivatives: [derivative], span: inner.span } : inner;
 }
 
 function orderOf(equations: readonly Expression[], name: string): number {

@@ -14,6 +14,7 @@ import type { Program } from './program.ts';
 import type { FitMeasure, ProvedError } from './proof.ts';
 import { LOCALS, needsHighDegree, notReducible, PAIR_LOCALS, recognisePair, reducePair, type Reduced, reduce, reducible, type ReductionProblem } from './reduce/index.ts';
 import type { Basis } from './search.ts';
+import { filledLines } from './wrap.ts';
 
 export interface FitProblem {
   readonly function: Expression;
@@ -120,7 +121,7 @@ function fitted(problem: FitProblem, budget: Budget): Fit {
   };
   if (reduction === 'always') return viaReduction();
   const viaPolynomial = (): Fit => plain(problem, whole, written, budget);
-  if (!shape || !problem.tolerance || problem.basis) return viaPolynomial();
+  if (!shape || !problem.tolerance || problem.basis || problem.exact) return viaPolynomial();
   return needsHighDegree(asked, budget) ? firstOf(viaReduction, viaPolynomial) : firstOf(viaPolynomial, viaReduction);
 }
 
@@ -311,7 +312,6 @@ function assumptionsOf({ language, contraction }: FitProblem, format: FloatForma
 }
 
 const MEASURES: Readonly<Record<FitMeasure, string>> = { absolute: 'absolute error', relative: 'relative error', ulp: 'error in ulp' };
-const WIDTH = 92;
 
 function commentOf(problem: FitProblem, format: { readonly name: string; readonly argument?: string }, error: ProvedError, assumptions: readonly string[], way?: string): string[] {
   const where = [problem, ...(problem.second ? [problem.second] : [])].map(({ variable, intervalText: [low, high] }) => `${variable.replace(/\\/g, '')} in [${low}, ${high}]`).join(', ');
@@ -324,18 +324,5 @@ function commentOf(problem: FitProblem, format: { readonly name: string; readonl
     ...(way === undefined ? [] : [way]),
     `Assumes: ${assumptions.join('; ')}.`,
     'Valid only on this interval and in this format. In safety-related code follow your own standards and have it reviewed by qualified people.',
-  ].flatMap(filled);
-}
-
-/** Words of one sentence in lines of bounded width. */
-function filled(text: string): string[] {
-  const lines: string[] = [];
-  let line = '';
-  for (const word of text.split(' ')) {
-    if (line !== '' && line.length + 1 + word.length > WIDTH) {
-      lines.push(line);
-      line = word;
-    } else line = line === '' ? word : `${line} ${word}`;
-  }
-  return [...lines, line];
+  ].flatMap(filledLines);
 }

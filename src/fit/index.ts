@@ -5,4 +5,4 @@ export { countOperations, type Arithmetic, type Operations, type Program } from 
 export type { FitMeasure, ProvedError } from './proof.ts';
 export { estimatedSpeed, type Speed } from './speed.ts';
 export { parityOf } from './target.ts';
-export { wrapCode } from './wrap.ts';
+export { filledLines, wrapCode } from './wrap.ts';

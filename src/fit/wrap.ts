@@ -1,4 +1,4 @@
-/** Long lines of code broken after an operator, as each language allows it. */
+/** Long lines: of code broken after an operator, as each language allows it; of comments between words. */
 import type { LanguageRow } from '../write/index.ts';
 
 const WIDTH = 100;
@@ -37,4 +37,19 @@ function breakBefore(line: string, width: number, indent: number): number | null
 function inBrackets(line: string): string {
   const [, head, value] = /^(\s*(?:return|\w+ =) )(.*)$/.exec(line) ?? [];
   return head === undefined || value === undefined ? line : `${head}(${value})`;
+}
+
+const COMMENT_WIDTH = 92;
+
+/** Words of one sentence of a comment in lines of bounded width. */
+export function filledLines(text: string): string[] {
+  const lines: string[] = [];
+  let line = '';
+  for (const word of text.split(' ')) {
+    if (line !== '' && line.length + 1 + word.length > COMMENT_WIDTH) {
+      lines.push(line);
+      line = word;
+    } else line = line === '' ? word : `${line} ${word}`;
+  }
+  return [...lines, line];
 }

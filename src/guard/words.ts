@@ -1,6 +1,6 @@
 /** Numbers and sentences of a guard, for answers and comments. */
 import { type Expression, Q } from '../expression/index.ts';
-import type { FloatFormat } from '../fit/index.ts';
+import { filledLines, type FloatFormat } from '../fit/index.ts';
 import { real } from '../rigorous/index.ts';
 import { toPlain } from '../write/index.ts';
 
@@ -20,8 +20,6 @@ export interface CommentFacts {
   readonly assumptions: readonly string[];
 }
 
-const WIDTH = 92;
-
 export function commentOf(facts: CommentFacts): string[] {
   const branches =
     facts.series !== null && facts.switchText !== null ? ` (${decimal(facts.series)} within ${facts.switchText} of the point, by ${facts.terms} ${facts.terms === 1 ? 'term' : 'terms'} of the series; ${decimal(facts.direct ?? 0)} beyond)` : '';
@@ -30,18 +28,5 @@ export function commentOf(facts: CommentFacts): string[] {
     `Proven for every ${facts.format.name} argument in the interval, evaluation included: relative error at most ${decimal(facts.whole)}${branches}.`,
     `Assumes: ${facts.assumptions.join('; ')}.`,
     'Valid only on this interval and in this format. In safety-related code follow your own standards and have it reviewed by qualified people.',
-  ].flatMap(filled);
-}
-
-/** Words of one sentence in lines of bounded width. */
-function filled(text: string): string[] {
-  const lines: string[] = [];
-  let line = '';
-  for (const word of text.split(' ')) {
-    if (line !== '' && line.length + 1 + word.length > WIDTH) {
-      lines.push(line);
-      line = word;
-    } else line = line === '' ? word : `${line} ${word}`;
-  }
-  return [...lines, line];
+  ].flatMap(filledLines);
 }

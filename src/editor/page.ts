@@ -427,7 +427,7 @@ export class Page implements vscode.Disposable {
     const state: PageState = {
       shown: this.#shown,
       busy: this.#busy > 0,
-      place: document ? `${document.uri.path.split('/').at(-1) ?? ''}:${line}` : '',
+      place: document ? `${document.uri.path.split('/').at(-1) ?? ''}${this.#mode === 'claims' ? '' : `:${line}`}` : '',
       code: document ? isCode(engineLanguage(document)) : false,
       pinned: this.#pinned,
       stale: this.#stale,

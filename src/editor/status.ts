@@ -54,8 +54,12 @@ export class Status implements vscode.Disposable {
   }
 }
 
+function oneClaim({ hold, fail }: Counts): string {
+  return hold > 0 ? vscode.l10n.t('1 claim: it holds') : fail > 0 ? vscode.l10n.t('1 claim: it fails') : vscode.l10n.t('1 claim: undecided');
+}
+
 export function countsText(counts: Counts): string {
   if (counts.claims === 0) return vscode.l10n.t('No printed expansions');
-  const text = vscode.l10n.t('{0} claims: {1} hold, {2} fail, {3} undecided', counts.claims, counts.hold, counts.fail, counts.undecided);
+  const text = counts.claims === 1 ? oneClaim(counts) : vscode.l10n.t('{0} claims: {1} hold, {2} fail, {3} undecided', counts.claims, counts.hold, counts.fail, counts.undecided);
   return counts.unread > 0 ? `${text}; ${vscode.l10n.t('{0} formulas not read', counts.unread)}` : text;
 }

@@ -98,7 +98,7 @@ function head(now: PageState): HTMLElement {
       'div',
       { class: 'where' },
       now.place !== '' && h('button', { type: 'button', class: 'link', id: 'reveal', title: t('reveal'), on: { click: () => send({ kind: 'reveal' }) } }, now.place),
-      now.place !== '' && h('button', { type: 'button', class: 'link', id: 'pin', 'aria-pressed': String(now.pinned), on: { click: () => send({ kind: 'pin', pinned: !now.pinned }) } }, now.pinned ? t('unpin') : t('pin')),
+      now.place !== '' && kind !== 'claims' && h('button', { type: 'button', class: 'link', id: 'pin', 'aria-pressed': String(now.pinned), on: { click: () => send({ kind: 'pin', pinned: !now.pinned }) } }, now.pinned ? t('unpin') : t('pin')),
       now.busy && h('span', { class: 'busy', role: 'status' }, t('busy'), ' ', h('button', { type: 'button', class: 'link', id: 'stop', on: { click: () => send({ kind: 'cancel' }) } }, t('stop'))),
     ),
   );

@@ -113,7 +113,7 @@ export const scenes = {
     await focusEditor(page);
     await runCommand(page, 'Leading Order: Check This Document');
     const frame = await expansionFrame(page, '.claims');
-    const text = await pageSays(frame, /1 claims?: 0 hold, 1 fail/);
+    const text = await pageSays(frame, /1 claim: it fails/);
     holds(/22\s+fails/.test(text), `the list reads ${text}`);
     await frame.locator('#claim-0').click();
     await page.locator('.statusbar-item', { hasText: 'Ln 22' }).first().waitFor({ timeout: 10_000 });

@@ -1,14 +1,14 @@
 // Pictures of the four main scenes in four themes, from the real workbench, for README and walkthrough: media/scenes/<scene>-<theme>.png and media/walkthrough/<scene>.png; high contrast into .cache/scenes.
-// `node test/host/screenshots.mjs [scene ...]`
+// `node test/host/screenshots.mjs [scene or theme ...]`; the scenes `polynomial` and `claims` are only looked at, too.
 import { spawnSync } from 'node:child_process';
-import { copyFileSync, mkdirSync, readFileSync } from 'node:fs';
+import { mkdirSync, readFileSync } from 'node:fs';
 import path from 'node:path';
 import { requireNode } from '../../src/start/requireNode.mjs';
 
 requireNode();
 const { launchBrowser } = await import('../../src/start/browser.mjs');
 const { ROOT, serveWorkbench } = await import('../../src/start/workbench.mjs');
-const { awayFromText, closeHover, expansionFrame, focusEditor, goTo, hoverAtCursor, openFixes, openFromExplorer, openWorkbench, pageSays, pause, placeOf, runCommand, select } = await import('./driver.mjs');
+const { closeHover, expansionFrame, focusEditor, goTo, hoverAtCursor, openFixes, openFromExplorer, openWorkbench, pageSays, pause, placeOf, runCommand, select } = await import('./driver.mjs');
 
 const DEMO = path.join(ROOT, 'media/demo');
 const NOTE = readFileSync(path.join(DEMO, 'sag-note.tex'), 'utf8');
@@ -65,6 +65,30 @@ SCENES.problems = async (page) => {
   return around(page, '.monaco-hover:visible', { left: 60, top: 40, right: 60, bottom: 60, width: 620 });
 };
 
+SCENES.claims = async (page) => {
+  await page.setViewportSize({ width: 1120, height: 900 });
+  await focusEditor(page);
+  await runCommand(page, 'Leading Order: Check This Document');
+  await expansionFrame(page, '.claims');
+  await pause(500);
+  return { x: 0, y: 0, width: 1120, height: 900 };
+};
+SCENES.polynomial = async (page) => {
+  await page.setViewportSize({ width: 1120, height: 1120 });
+  await openFromExplorer(page, 'controller.c');
+  await select(page, readFileSync(path.join(DEMO, 'controller.c'), 'utf8'), 'sinf(angle)');
+  await runCommand(page, 'Leading Order: Replace Call by Polynomial');
+  const frame = await expansionFrame(page, '#compute');
+  await frame.locator('#from').fill('-0.5');
+  await frame.locator('#to').fill('0.5');
+  await frame.locator('#measure').selectOption('ulp');
+  await frame.locator('#tolerance').fill('1');
+  await frame.locator('#compute').click();
+  await frame.locator('#fit-plot').waitFor({ timeout: 60_000 });
+  await pause(500);
+  return { x: 0, y: 0, width: 1120, height: 1120 };
+};
+
 async function around(page, selector, room) {
   const box = await page.locator(selector).first().boundingBox();
   if (!box) throw new Error(`${selector} is not shown`);
@@ -82,22 +106,26 @@ if (!browser) {
   process.exit(1);
 }
 const wanted = process.argv.slice(2);
+const wantedScenes = wanted.filter((word) => word in SCENES);
+const wantedThemes = wanted.filter((word) => word in THEMES);
 for (const folder of ['media/scenes', 'media/walkthrough', '.cache/scenes']) mkdirSync(path.join(ROOT, folder), { recursive: true });
 let failed = 0;
 for (const [theme, name] of Object.entries(THEMES)) {
+  if (wantedThemes.length > 0 && !wantedThemes.includes(theme)) continue;
   const settings = { 'workbench.colorTheme': name, 'editor.hover.delay': 50, 'editor.fontSize': 14, 'breadcrumbs.enabled': false, 'workbench.layoutControl.enabled': false, 'editor.lightbulb.enabled': 'off', 'workbench.reduceMotion': 'on' };
   const server = await serveWorkbench({ folder: DEMO, settings });
   const { page, close } = await openWorkbench(browser, server.url, { width: 1120, height: 760, scale: 1.5 });
   await openFromExplorer(page, 'sag-note.tex');
   await page.keyboard.press('Control+b');
-  for (const [scene, stage] of [['hover', SCENES.hover], ['fixes', SCENES.fixes], ['problems', SCENES.problems], ['page', SCENES.page]]) {
-    if (wanted.length > 0 && !wanted.includes(scene)) continue;
+  for (const [scene, stage] of [['hover', SCENES.hover], ['fixes', SCENES.fixes], ['problems', SCENES.problems], ['page', SCENES.page], ['claims', SCENES.claims], ['polynomial', SCENES.polynomial]]) {
+    if (wantedScenes.length > 0 && !wantedScenes.includes(scene)) continue;
     try {
       const clip = await stage(page);
       // High contrast is only looked at; the pictures that are kept stay below 1.5 MB.
-      const file = path.join(ROOT, theme in KEPT ? 'media/scenes' : '.cache/scenes', `${scene}-${theme}.png`);
+      const file = path.join(ROOT, theme in KEPT && scene in WALKTHROUGH ? 'media/scenes' : '.cache/scenes', `${scene}-${theme}.png`);
       await page.screenshot({ path: file, clip });
-      if (theme === 'dark') copyFileSync(file, path.join(ROOT, 'media/walkthrough', `${WALKTHROUGH[scene]}.png`));
+      // The walkthrough is inside the package: one pixel a pixel is enough there.
+      if (theme === 'dark' && scene in WALKTHROUGH) await page.screenshot({ path: path.join(ROOT, 'media/walkthrough', `${WALKTHROUGH[scene]}.png`), clip, scale: 'css' });
       process.stdout.write(`${scene}-${theme}.png\n`);
     } catch (error) {
       failed += 1;

@@ -2,7 +2,7 @@
 import { build, dependsOn, type Expression, Q, substitute } from '../../expression/index.ts';
 import { differentiate } from '../../functions/index.ts';
 import { Declined } from '../../outcome.ts';
-import { type DifferentialStatement, slot, totalDerivative, type UnknownFunction } from './statement.ts';
+import { type DifferentialStatement, slot, type UnknownFunction } from './statement.ts';
 
 const isZero = (e: Expression): boolean => e.kind === 'number' && Q.isZero(e.value);
 const times = (...factors: readonly Expression[]): Expression => (factors.some(isZero) ? build.number(0) : build.product(...factors.filter((f) => !build.isOneNumber(f))));
@@ -59,11 +59,4 @@ function determinant(m: readonly (readonly Expression[])[]): Expression {
       return j % 2 === 0 || isZero(value) ? value : build.negation(value);
     }),
   );
-}
-
-/** The equation differentiated once: linear in the derivative one higher. */
-export function differentiated(statement: DifferentialStatement): DifferentialStatement {
-  const equations = statement.equations.map((f) => totalDerivative(f, statement.variable));
-  if (equations.some((e) => e === null)) throw new Declined('no-expansion', 'The equation could not be differentiated to solve it for its highest derivative; solve it for that derivative first.');
-  return { ...statement, equations: equations as Expression[], unknowns: statement.unknowns.map((u) => ({ ...u, order: u.order + 1 })) };
 }

@@ -67,7 +67,7 @@ export interface RegularSolution {
 /** The solution's Taylor series. Throws Singular where the equation, solved for its highest derivatives, is singular at the start. */
 export function regularSolution(statement: DifferentialStatement, start: StartValues, problem: Pick<ExpansionProblem, 'variable' | 'point' | 'assumptions'>, budget: Budget): RegularSolution {
   const system = linearInHighest(statement);
-  if (!system) throw new Declined('no-expansion', 'The highest derivative does not enter linearly; solve the equation for its highest derivative first, or differentiate it once.');
+  if (!system) throw new Declined('no-expansion', 'The highest derivative does not enter linearly; solve the equation for its highest derivative first.');
   const solved = solvedForHighest(system);
   const side = openSide(problem, 'right', budget);
   const c = side.context;

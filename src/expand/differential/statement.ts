@@ -255,7 +255,7 @@ class Slots {
 }
 
 /** d/dx along a solution: each slot moves to the next derivative. Null where a function in it has no derivative in closed form. */
-export function totalDerivative(e: Expression, variable: string): Expression | null {
+function totalDerivative(e: Expression, variable: string): Expression | null {
   return differentiate(e, variable, (symbol) => {
     const s = slotOf(symbol);
     return s ? build.symbol(slot(s.name, s.derivative + 1)) : null;

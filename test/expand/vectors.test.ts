@@ -33,6 +33,7 @@ describe('as authors write them', () => {
     // Taylor's formula along a direction: common practice.
     [String.raw`f(\mathbf x + \mathbf h)`, String.raw`\mathbf h`, 3, String.raw`f(\mathbf{x}) + \mathbf{h} \cdot \nabla f(\mathbf{x}) + \frac{1}{2} (\mathbf{h} \cdot \nabla)^2 f(\mathbf{x}) + O(h^3)`],
     [String.raw`f(\mathbf x + \mathbf h) - 2 f(\mathbf x) + f(\mathbf x - \mathbf h)`, String.raw`\mathbf h`, 2, String.raw`(\mathbf{h} \cdot \nabla)^2 f(\mathbf{x}) + \frac{1}{12} (\mathbf{h} \cdot \nabla)^4 f(\mathbf{x}) + O(h^6)`],
+    [String.raw`\frac{f(\mathbf x + h\mathbf e) - f(\mathbf x - h\mathbf e)}{2h}`, 'h', 2, String.raw`\mathbf{e} \cdot \nabla f(\mathbf{x}) + \frac{h^2}{6} (\mathbf{e} \cdot \nabla)^3 f(\mathbf{x}) + O(h^4)`],
     [String.raw`\phi(\mathbf r + \epsilon\mathbf a) - \phi(\mathbf r)`, String.raw`\epsilon`, 1, String.raw`\epsilon \mathbf{a} \cdot \nabla \phi(\mathbf{r}) + O(\epsilon^2)`],
   ];
   for (const [text, name, terms, wanted, at] of rows) it(`${text} in ${name}`, () => expect(expansionLatex(expandedIn(text, name, terms, at))).toBe(wanted));

@@ -187,9 +187,30 @@ export const stepName = (key: BasisKey): string => `step ${key}`;
 /** The value of a coefficient where all that moves is zero. */
 function restOf(l: Lowering, c: Expression): Expression {
   const movingNames = [...l.moving, ...[...l.frame.quantities].filter(([, q]) => Q.signOf(q.weight) > 0).map(([name]) => name)].filter((name) => dependsOn(c, name));
-  const rest = movingNames.reduce((tree, name) => substitute(tree, name, build.number(0)), c);
-  for (const node of walk(rest)) if (node.kind === 'quotient' && isZero(node.denominator)) throw new Declined('no-expansion', 'The argument of a field has no limit here; write it so that it has one.');
+  if (movingNames.length === 0) return c;
+  const rest = withoutZeros(movingNames.reduce((tree, name) => substitute(tree, name, build.number(0)), c));
+  const plain = [...walk(rest)].every((n) => n.kind !== 'call' && n.kind !== 'apply' && !(n.kind === 'quotient' && isZero(n.denominator)));
+  if (!plain) throw new Declined('no-expansion', 'The place at which the field is expanded is not plain here; write its argument as a fixed vector and a small one.');
   return rest;
+}
+
+/** Factors and terms that are zero taken out, so that places that are equal look equal. */
+function withoutZeros(e: Expression): Expression {
+  const inner = mapChildren(e, withoutZeros);
+  switch (inner.kind) {
+    case 'product':
+      return inner.factors.some(isZero) ? build.number(0) : inner;
+    case 'negation':
+      return isZero(inner.operand) ? build.number(0) : inner;
+    case 'sum':
+      return build.sum(...inner.terms.filter((t) => !isZero(t)));
+    case 'quotient':
+      return isZero(inner.numerator) && !isZero(inner.denominator) ? build.number(0) : inner;
+    case 'power':
+      return isZero(inner.base) && inner.exponent.kind === 'number' && inner.exponent.value.num > 0n ? build.number(0) : inner;
+    default:
+      return inner;
+  }
 }
 
 function fieldName(l: Lowering, name: string, place: Expression): string {

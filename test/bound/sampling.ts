@@ -130,7 +130,7 @@ function remainderAt(expansion: Expansion, at: Rational, measure: Measure, mpfr:
   const onLeft = point !== 'inf' && point !== '-inf' && point.kind === 'number' && Q.compare(at, point.value) < 0;
   const side = onLeft && expansion.left ? expansion.left : expansion;
   const environment = new Map([['x', real.fromRational(at, BITS + 64)]]);
-  const name = mpfr && mpfrName(side.function);
+  const name = mpfrName(side.function);
   // Only arguments that MPFR can be given exactly.
   const exact = at.den > 0n && (at.den & (at.den - 1n)) === 0n;
   const [f, s] = [name && mpfr && exact ? mpfr(name, real.fromRational(at, 4096)) : encloseReal(side.function, environment, BITS, describe), encloseReal(partialSum(side), environment, BITS, describe)];

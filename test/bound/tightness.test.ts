@@ -66,7 +66,7 @@ const times: number[] = [];
 
 describe.each(groups)('$name ($source)', ({ rows, limit }) => {
   test.each(rows)('$f at $point, $terms terms on $interval $measure', ({ f, point, terms, interval: ends, measure = 'absolute', tolerance, assume = [] }) => {
-    const assumptions = assume.flatMap((text) => [...valueOf(readAssumption(text))]);
+    const assumptions = assume.flatMap((text) => valueOf(readAssumption(text)).flatMap((a): readonly Assumption[] => (a.kind === 'relation' ? [a] : [])));
     const withTerms = (n: number): Outcome<Expansion> => expand({ function: exact(f), variable: x, point: point === 'inf' || point === '-inf' ? point : exact(point), side: 'both', terms: n, radius: true, assumptions }, budget(MILLISECONDS));
     const interval = { lower: exact(ends[0]), upper: exact(ends[1]) };
     const expansion = valueOf(withTerms(terms));

@@ -1,13 +1,15 @@
 /** Names and what they stand for, as far as the document says. */
 import { type Expression, mapChildren, sameExpression, substitute } from '../expression/index.ts';
 import type { CompanionFile } from '../protocol.ts';
-import type { MacroTable } from '../read/index.ts';
+import type { Formula, MacroTable } from '../read/index.ts';
 import { definitionOf, sameName } from './claims.ts';
 import { type FoundFormula, formulasOf } from './formulas.ts';
-import type { CheckMemory } from './memory.ts';
+import { type CheckMemory, movedTree } from './memory.ts';
 
 interface Definition {
   readonly at: number;
+  /** By how much the places in `value` have moved. */
+  readonly by: number;
   readonly name: Expression;
   readonly value: Expression;
 }
@@ -21,7 +23,7 @@ export function definitionsOf(formulas: readonly FoundFormula[], files: readonly
   let read: readonly Definition[] | null = null;
   return {
     own: definitionsIn(formulas),
-    elsewhere: () => (read ??= files.flatMap((file) => definitionsIn(formulasOf(file.text, 'latex', { ...options, wanted: maybeDefinition }).found).map((d) => ({ ...d, value: withoutPlaces(d.value) })))),
+    elsewhere: () => (read ??= files.flatMap((file) => definitionsIn(formulasOf(file.text, 'latex', { ...options, wanted: maybeDefinition }).found).map((d) => ({ ...d, by: 0, value: withoutPlaces(d.value) })))),
   };
 }
 
@@ -34,15 +36,18 @@ function withoutPlaces(e: Expression): Expression {
   return rest as Expression;
 }
 
+/** Definitions in a formula as it was read first. */
+const known = new WeakMap<Formula, readonly Omit<Definition, 'at' | 'by'>[]>();
+
 function definitionsIn(formulas: readonly FoundFormula[]): readonly Definition[] {
-  const out: Definition[] = [];
-  for (const { formula, span } of formulas) {
-    for (const e of [formula.expression, ...formula.conditions]) {
-      const found = e.kind === 'relation' ? definitionOf(e) : null;
-      if (found) out.push({ at: span.start, ...found });
+  return formulas.flatMap(({ still, by, span }) => {
+    let own = known.get(still);
+    if (!own) {
+      own = [still.expression, ...still.conditions].flatMap((e) => (e.kind === 'relation' ? [definitionOf(e)] : [])).filter((d) => d !== null);
+      known.set(still, own);
     }
-  }
-  return out;
+    return own.map((d) => ({ at: span.start, by, ...d }));
+  });
 }
 
 /** Values of a name, the nearest definition before the place first. T'(x) is the derivative of T(x); T(2h) is T(h) at 2h. */
@@ -56,12 +61,13 @@ export function resolve(definitions: Definitions, name: Expression, at: number):
 }
 
 function applied(definition: Definition, name: Expression): Expression | null {
-  if (name.kind !== 'apply') return definition.value;
+  const defined = definition.by === 0 ? definition.value : movedTree(definition.value, definition.by);
+  if (name.kind !== 'apply') return defined;
   const [argument] = name.args;
   const times = name.derivatives.reduce((a, b) => a + b, 0);
   const own = definition.name.kind === 'apply' ? definition.name.args[0] : argument;
-  if (name.args.length !== 1 || !argument || own?.kind !== 'symbol') return times === 0 ? definition.value : null;
-  const value: Expression = times === 0 ? definition.value : { kind: 'derivative', body: definition.value, variable: own, times };
+  if (name.args.length !== 1 || !argument || own?.kind !== 'symbol') return times === 0 ? defined : null;
+  const value: Expression = times === 0 ? defined : { kind: 'derivative', body: defined, variable: own, times };
   if (sameExpression(argument, own)) return value;
   return times === 0 ? substitute(value, own.name, argument) : null;
 }

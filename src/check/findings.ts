@@ -6,7 +6,7 @@ import { judgeAccuracy, statementIn } from './accuracy.ts';
 import { type Accused, blame, isOneChangeAway } from './blame.ts';
 import { type Claim, isTranscendental } from './claims.ts';
 import { regionBeside, regionError } from './convergence.ts';
-import type { FoundFormula } from './formulas.ts';
+import type { PlacedFormula } from './formulas.ts';
 import { halfUnit } from './decimals.ts';
 import { explicitPart, type General, generalIn, judgeGeneral } from './generalClaims.ts';
 import { type Hint, judge, type Judgement } from './judge.ts';
@@ -20,7 +20,7 @@ import { hasMarks, withoutMarks } from './truncated.ts';
 
 export interface Place {
   readonly text: string;
-  readonly formula: FoundFormula;
+  readonly formula: PlacedFormula;
   readonly around: Around;
   /** Where the next claim of the text begins: what stands behind that belongs to it. Absent: there is none. */
   readonly until?: number;

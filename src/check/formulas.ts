@@ -1,15 +1,33 @@
 /** The formulas of a document that may hold claims: mathematics, Markdown, comments of code, plain lines. */
 import { type Expression, type Span, walk } from '../expression/index.ts';
 import { type DocumentContent, type Formula, type MacroTable, readDocument, readFormula, type Region } from '../read/index.ts';
-import { type CheckMemory, macrosUsed, signatureOf } from './memory.ts';
+import { type CheckMemory, macrosUsed, movedTree } from './memory.ts';
 
-export interface FoundFormula {
+export interface PlacedFormula {
   readonly span: Span;
   readonly notation: 'latex' | 'plain';
   readonly formula: Formula;
   /** Stands in running text. */
   readonly inline: boolean;
   readonly label: string | null;
+}
+/** A formula as it was read first, and by how much its places have moved since. */
+export interface FoundFormula extends PlacedFormula {
+  readonly still: Formula;
+  readonly by: number;
+}
+
+/** Places are moved only where they are asked for. */
+function foundFormula(place: Omit<PlacedFormula, 'formula'>, still: Formula, by: number): FoundFormula {
+  let moved: Formula | null = by === 0 ? still : null;
+  return {
+    ...place,
+    still,
+    by,
+    get formula() {
+      return (moved ??= movedTree(still, by));
+    },
+  };
 }
 export interface UnreadFormula extends Span {
   readonly reason: string;
@@ -30,10 +48,10 @@ export function formulasOf(text: string, language: string, options: { readonly f
   const read = (span: Span, notation: 'latex' | 'plain', inline: boolean, label: string | null, quiet: boolean, source = text): boolean => {
     const written = source.slice(span.start, span.end);
     if (options.wanted?.(written) === false) return false;
-    const key = options.memory ? signatureOf([notation, written, macrosUsed(written, content.macros)]) : '';
-    const known = options.memory?.formulas.recall(key, span.start);
+    const key = options.memory ? `${notation}\n${macrosUsed(written, content.macros)}\n${written}` : '';
+    const known = options.memory?.formulas.recallStill(key);
     if (known) {
-      found.push({ span, notation, formula: known, inline, label });
+      found.push(foundFormula({ span, notation, inline, label }, known.value, span.start - known.start));
       return true;
     }
     const outcome = readFormula(source, notation, { start: span.start, end: span.end, macros: content.macros, joinRows: true });
@@ -44,7 +62,7 @@ export function formulasOf(text: string, language: string, options: { readonly f
     }
     if (outcome.ok) {
       options.memory?.formulas.keep(key, span.start, outcome.value);
-      found.push({ span, notation, formula: outcome.value, inline, label });
+      found.push(foundFormula({ span, notation, inline, label }, outcome.value, 0));
       return true;
     }
     if (!quiet) unread.push({ start: outcome.error.start ?? span.start, end: Math.max(outcome.error.end ?? span.end, (outcome.error.start ?? span.start) + 1), reason: outcome.error.message, ...(outcome.error.code === 'unknown-function' ? { unknown: true } : {}) });

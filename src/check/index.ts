@@ -3,7 +3,7 @@ import { build, children, sameExpression, walk, type Assumption, type Expression
 import { attempt, type Budget, Declined, type Outcome, success } from '../outcome.ts';
 import { missingFiles } from '../companions.ts';
 import type { CompanionFile, Finding } from '../protocol.ts';
-import { macrosOf, readExact, readExpression, readNotes, readVariable, settingsAt } from '../read/index.ts';
+import { type Formula, macrosOf, readExact, readExpression, readNotes, readVariable, settingsAt } from '../read/index.ts';
 import { branchFindings, type BranchReader } from './branches.ts';
 import { type Claim, claimsOf } from './claims.ts';
 import { type Definitions, definitionsOf, resolve } from './definitions.ts';
@@ -81,24 +81,26 @@ function* checking(parts: CheckParts, budget: Budget): Generator<void, Checked> 
   const definitions = definitionsOf(found, files, options);
   const findings: Finding[] = [];
   const request = signatureOf([parts.language, absent, asked.variable, asked.point, asked.side, asked.assumptions, parts.of, parts.variable]);
-  const claims = found.map((formula) => ({ formula, claims: claimsIn(formula, given) }));
-  const starts = claims.flatMap((c) => c.claims.filter((claim) => claim.function !== null || hasMarks(claim.side)).map((claim) => claim.span.start)).sort((a, b) => a - b);
+  const claims = found.map((formula) => ({ formula, claims: stillClaims(formula, given) }));
+  const starts = claims.flatMap((c) => c.claims.filter((claim) => claim.function !== null || hasMarks(claim.side)).map((claim) => claim.span.start + c.formula.by)).sort((a, b) => a - b);
   for (const { formula, claims: own } of claims) {
     if (own.length === 0) continue;
     const note = settingsAt(notes, formula.span.start);
     if (note.skip === true) continue;
-    const around = aroundOf(parts.text, formula);
     const { start, end } = formula.span;
-    const judgeAll = (time: Budget): readonly Finding[] =>
-      own.flatMap((claim) => {
+    const [before, after] = [parts.text.slice(Math.max(0, start - REACH), start), parts.text.slice(end, end + REACH)];
+    const judgeAll = (time: Budget): readonly Finding[] => {
+      const around: Place['around'] = { conditions: formula.formula.conditions, before, after };
+      return (formula.by === 0 ? own : claimsIn(formula.formula, given)).flatMap((claim) => {
         const until = firstFrom(starts, claim.span.end);
         const place: Place = { text: parts.text, formula, around, absent, ...(until === null ? {} : { until }) };
         const local = withNote({ ...asked, budget: share(time) }, note, parts);
         return withinTime(claim.span, () => checkClaim(claim, given, definitions, local, place));
       });
+    };
     const next = firstFrom(starts, end);
     const key = (): string =>
-      signatureOf([request, note, parts.text.slice(start, end), formula.notation, formula.inline, formula.label, around.before, around.after, next === null || next > end + REACH ? null : next - start, definitionsUsed(own, definitions, parts.text, start), macrosUsed(parts.text.slice(start, end), content.macros)]);
+      signatureOf([request, note, parts.text.slice(start, end), formula.notation, formula.inline, formula.label, before, after, next === null || next > end + REACH ? null : next - start, definitionsUsed(own, definitions, parts.text, formula), macrosUsed(parts.text.slice(start, end), content.macros)]);
     findings.push(...remembered(parts.memory, key, start, budget, judgeAll));
     yield;
   }
@@ -141,10 +143,10 @@ function remembered(memory: CheckMemory | undefined, keyOf: () => string, start:
 }
 
 /** What the names in the claims stand for, as it enters their verdicts. */
-function definitionsUsed(claims: readonly Claim[], definitions: Definitions, text: string, at: number): readonly unknown[] {
+function definitionsUsed(claims: readonly Claim[], definitions: Definitions, text: string, { span, by }: FoundFormula): readonly unknown[] {
   return claims.flatMap((claim) => {
     const own = claim.name ?? claim.function;
-    return own && (claim.function === null || wordOf(claim.function, text) !== null) ? resolve(definitions, own, at) : [];
+    return own && (claim.function === null || wordOf(claim.function, text, by) !== null) ? resolve(definitions, own, span.start) : [];
   });
 }
 
@@ -169,12 +171,20 @@ function withinTime(span: { readonly start: number; readonly end: number }, find
   }
 }
 
-function claimsIn(formula: FoundFormula, given: Expression | null): readonly Claim[] {
-  const { expression, conditions } = formula.formula;
+/** Claims of formulas as they were read first, where no function is given. */
+const knownClaims = new WeakMap<Formula, readonly Claim[]>();
+
+function stillClaims({ still }: FoundFormula, given: Expression | null): readonly Claim[] {
+  if (given) return claimsIn(still, given);
+  const claims = knownClaims.get(still) ?? claimsIn(still, given);
+  knownClaims.set(still, claims);
+  return claims;
+}
+
+function claimsIn({ expression, conditions }: Formula, given: Expression | null): readonly Claim[] {
   const chains = [expression, ...conditions].filter((e): e is RelationNode => e.kind === 'relation');
   if (expression.kind !== 'relation' && given && hasMarks(expression)) {
-    const span = expression.span ?? formula.span;
-    return [{ function: given, name: null, side: expression, relation: '=', span, neighbour: null }];
+    return expression.span ? [{ function: given, name: null, side: expression, relation: '=', span: expression.span, neighbour: null }] : [];
   }
   return chains.flatMap(claimsOf);
 }
@@ -223,9 +233,9 @@ function speaksOfItself(name: Expression, side: Expression): boolean {
 const isSeriesLike = (e: Expression): boolean => e.kind === 'sum' || ((e.kind === 'product' || e.kind === 'negation') && children(e).some(isSeriesLike));
 
 /** Capital letters without a gap (KE) that were read as a product are one name. */
-function wordOf(e: Expression, text: string): string | null {
+function wordOf(e: Expression, text: string, by = 0): string | null {
   if (e.kind !== 'product' || !e.span || !e.factors.every((f) => f.kind === 'symbol' && /^[A-Z]$/.test(f.name))) return null;
-  const written = text.slice(e.span.start, e.span.end);
+  const written = text.slice(e.span.start + by, e.span.end + by);
   return /^[A-Z]{2,}$/.test(written) ? written : null;
 }
 
@@ -286,10 +296,6 @@ function withNote(asked: Asked, note: ReturnType<typeof settingsAt>, parts: Chec
 const valueOf = <T>(outcome: Outcome<T>): T | null => (outcome.ok ? outcome.value : null);
 
 const REACH = 240;
-function aroundOf(text: string, formula: FoundFormula): Place['around'] {
-  return { conditions: formula.formula.conditions, before: text.slice(Math.max(0, formula.span.start - REACH), formula.span.start), after: text.slice(formula.span.end, formula.span.end + REACH) };
-}
-
 /** A part of the remaining time, never none. */
 function share(whole: Budget): Budget {
   const end = performance.now() + Math.max(20, whole.remaining() * SHARE);

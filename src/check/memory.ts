@@ -29,6 +29,15 @@ class Store<T> {
     return value;
   }
 
+  /** The value for the key as it was kept, and where its text started then. */
+  recallStill(key: string): { readonly value: T; readonly start: number } | null {
+    const entry = this.entries.get(key);
+    if (!entry) return null;
+    this.entries.delete(key);
+    this.entries.set(key, entry);
+    return entry;
+  }
+
   keep(key: string, start: number, value: T): void {
     const old = this.entries.get(key);
     if (old) {
@@ -67,7 +76,7 @@ function movedFindings(findings: readonly Finding[], by: number): readonly Findi
 }
 
 /** Plain data with every `span` in it moved; exact numbers hold no places. */
-function movedTree<T>(value: T, by: number): T {
+export function movedTree<T>(value: T, by: number): T {
   if (Array.isArray(value)) return value.map((v: unknown) => movedTree(v, by)) as T;
   if (typeof value !== 'object' || value === null) return value;
   const out: Record<string, unknown> = {};

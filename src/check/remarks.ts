@@ -79,7 +79,8 @@ export function remarkFinding(remark: Remark, asked: Asked): Finding {
   const { polynomial, tolerance, unit, named, interval, place } = remark;
   const base = { ...place, claim: place, found: '', fix: null };
   const undecided = (reason: string): Finding => ({ ...base, verdict: 'undecided', severity: 'hint', reason });
-  const precision = polynomial.format === 'extended' ? 64 : polynomial.format === 'binary128' ? 113 : FLOAT_FORMATS[polynomial.format].precision;
+  const precision = (FLOAT_FORMATS as Readonly<Record<string, { readonly precision: number } | undefined>>)[polynomial.format]?.precision;
+  if (precision === undefined) return undecided('What an ulp is in this number format is not known.');
   /** An ulp is between 2^-p and 2^(1-p) of the value. */
   const ulp = Q.power(Q.rational(2), BigInt(-precision));
   const relative = remark.relative || unit === 'ulp';

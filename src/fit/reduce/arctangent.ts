@@ -5,7 +5,7 @@ import { type Budget, Declined } from '../../outcome.ts';
 import { type Ball, real } from '../../rigorous/index.ts';
 import type { Statement } from '../../write/index.ts';
 import { type FloatFormat, powerOfTwo, roundTo } from '../format.ts';
-import { absoluteOf, allowedOff, arithmeticOf, choice, fitKernel, greater, inParts, kernelStatements, lastRounded, let_, leastIn, largestIn, REDUCED, type Reduced, type ReductionProblem, relation, tooSmall, valueRange } from './kernel.ts';
+import { absoluteOf, allowedOff, arithmeticOf, choice, fitKernel, greater, inParts, kernelStatements, lastRounded, let_, leastIn, largestIn, REDUCED, type Reduced, type ReductionProblem, relation, requireSolid, tooSmall, valueRange } from './kernel.ts';
 import { halfUlp, roundedUp } from './parts.ts';
 import { CONSTANT_BITS, constantBall } from './recognise.ts';
 
@@ -61,6 +61,7 @@ export function reduceArctangent(problem: ReductionProblem, factor: Expression, 
   const goal = whole.tolerance && allowedOff(totalOf, whole.tolerance, whole.tolerance);
   if (whole.tolerance && goal && Q.isZero(goal)) throw tooSmall(whole, whole.tolerance);
   const kernel = fitKernel(problem, { function: f, low: Q.negate(WINDOW), high: WINDOW, measure, ...(goal ? { tolerance: goal } : {}) }, budget);
+  requireSolid(kernel, largest, format);
   const { error } = kernel.found;
   const total = totalOf(error.total);
   const x = build.symbol(parameter);

@@ -4,7 +4,7 @@ import { type Budget, Declined } from '../../outcome.ts';
 import { encloseInterval, interval, real } from '../../rigorous/index.ts';
 import { describe } from '../../functions/index.ts';
 import { powerOfTwo } from '../format.ts';
-import { arithmeticOf, fitKernel, greater, inParts, kernelStatements, let_, REDUCED, type Reduced, type ReductionProblem, relation, tooSmall } from './kernel.ts';
+import { arithmeticOf, fitKernel, greater, inParts, kernelStatements, let_, REDUCED, type Reduced, type ReductionProblem, relation, requireSolid, tooSmall } from './kernel.ts';
 import { nearestInteger, reduced, roundedUp, splitPeriod } from './parts.ts';
 import { CONSTANT_BITS, constantBall } from './recognise.ts';
 
@@ -33,6 +33,7 @@ export function reduceCircular(problem: ReductionProblem, rate: Expression, quar
   const shared = { low: Q.negate(split.reach), high: split.reach, measure, inherited: { absolute: moved, relative: roundedUp(Q.divide(moved, least)) }, ...(whole.tolerance ? { tolerance: whole.tolerance } : {}) };
   const even = fitKernel(problem, { ...shared, function: f }, budget);
   const odd = fitKernel(problem, { ...shared, function: g }, budget);
+  for (const kernel of [even, odd]) requireSolid(kernel, amplitude, format);
   const total = greater(even.found.error.total, odd.found.error.total);
   const [approximation, rounding] = [greater(even.found.error.approximation, odd.found.error.approximation), greater(even.found.error.rounding, odd.found.error.rounding)];
   const subnormal = even.found.error.subnormal && odd.found.error.subnormal ? greater(even.found.error.subnormal, odd.found.error.subnormal) : (even.found.error.subnormal ?? odd.found.error.subnormal);

@@ -4,7 +4,7 @@ import { type Budget, Declined } from '../../outcome.ts';
 import { real } from '../../rigorous/index.ts';
 import { powerOfTwo, roundTo } from '../format.ts';
 import type { ProvedError } from '../proof.ts';
-import { arithmeticOf, fitKernel, inParts, kernelStatements, let_, monotoneSize, overflowing, REDUCED, type Reduced, relation, vanishing, type ReductionProblem, scaledStatements, underflow, valueRange, largestIn, withUnderflow } from './kernel.ts';
+import { arithmeticOf, fitKernel, inParts, kernelStatements, let_, monotoneSize, overflowing, REDUCED, type Reduced, relation, requireSolid, vanishing, type ReductionProblem, scaledStatements, underflow, valueRange, largestIn, withUnderflow } from './kernel.ts';
 import { nearestInteger, reduced, roundedUp, splitPeriod } from './parts.ts';
 import { CONSTANT_BITS, constantBall } from './recognise.ts';
 
@@ -46,6 +46,7 @@ export function reduceExponential(problem: ReductionProblem, rate: Expression, b
   const ends = [Q.negate(split.reach), split.reach].map((x) => valueRange(f, REDUCED, x));
   const bounds = ends.map((e) => (e ? largestIn(e) : Q.ZERO));
   const inside = { most: Q.multiply(bounds.reduce((a, b) => (Q.compare(a, b) > 0 ? a : b)), Q.rational(2)), least: Q.multiply(bounds.reduce((a, b) => (Q.compare(a, b) < 0 ? a : b)), Q.HALF) };
+  requireSolid(kernel, inside.least, format);
   const k = build.symbol('k');
   const scaled = scaledStatements(value, k, split.least, split.most, inside, (n) => nearestInteger(build.product(n, build.number(Q.HALF)), row, arithmetic.operations), arithmetic.operations);
   const x = build.symbol(parameter);

@@ -63,6 +63,14 @@ export function fitKernel({ whole }: ReductionProblem, kernel: KernelProblem, bu
 export const tooSmall = ({ format }: PolynomialProblem, tolerance: Rational): Declined =>
   new Declined('bad-request', `Rounding in ${format.name} takes the tolerance ${Q.toDouble(tolerance).toExponential(2)} away when the argument is reduced; allow a larger tolerance or a wider format.`);
 
+/**
+ * A kernel whose values are so small that its relative error is not kept would carry that through the scaling. `size` is the least of its values, or the largest
+ * where it has a zero: far above the subnormal numbers, a relative error of the largest value covers what is lost beside the zero.
+ */
+export function requireSolid({ found }: Kernel, size: Rational, { emin, precision, name }: FloatFormat): void {
+  if (found.error.subnormal && Q.compare(size, powerOfTwo(emin + 3 * precision)) < 0) throw new Declined('bad-request', `The values of this function on the reduced interval come near the smallest ${name} numbers; take a constant factor out or a wider format.`);
+}
+
 /** Steps and value of a kernel whose argument is named REDUCED in the code. */
 export function kernelStatements(program: Program): { readonly steps: readonly Statement[]; readonly value: Expression } {
   return { steps: program.steps.map((s): Statement => ({ kind: 'let', ...s })), value: program.result };

@@ -4,7 +4,7 @@ import { type Budget, Declined } from '../../outcome.ts';
 import { real } from '../../rigorous/index.ts';
 import { binaryExponent, type FloatFormat, powerOfTwo, roundTo, ulp } from '../format.ts';
 import type { Statement } from '../../write/index.ts';
-import { arithmeticOf, choice, fitKernel, greater, inParts, kernelStatements, lastRounded, largestIn, leastIn, absoluteOf, allowedOff, let_, REDUCED, type Reduced, type ReductionProblem, relation, tooSmall, valueRange } from './kernel.ts';
+import { arithmeticOf, choice, fitKernel, greater, inParts, kernelStatements, lastRounded, largestIn, leastIn, absoluteOf, allowedOff, let_, REDUCED, type Reduced, type ReductionProblem, relation, requireSolid, tooSmall, valueRange } from './kernel.ts';
 import { halfUlp, roundedUp } from './parts.ts';
 import { CONSTANT_BITS, constantBall } from './recognise.ts';
 
@@ -92,6 +92,7 @@ export function reduceLogarithm(problem: ReductionProblem, factor: Expression, b
   const goal = whole.tolerance && allowedOff(totalOf, whole.tolerance, relative && inner === 'absolute' ? Q.multiply(whole.tolerance, size) : whole.tolerance);
   if (whole.tolerance && goal && Q.isZero(goal)) throw tooSmall(whole, whole.tolerance);
   const kernel = fitKernel(problem, { function: f, ...window, measure: inner, ...(goal ? { tolerance: goal } : {}) }, budget);
+  requireSolid(kernel, largest, format);
   const { error } = kernel.found;
   const total = totalOf(error.total);
   const { steps, value } = kernelStatements(kernel.found.writtenProgram);

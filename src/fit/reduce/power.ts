@@ -5,7 +5,7 @@ import { encloseReal, real } from '../../rigorous/index.ts';
 import { describe } from '../../functions/index.ts';
 import type { Statement } from '../../write/index.ts';
 import { binaryExponent, powerOfTwo, roundTo } from '../format.ts';
-import { arithmeticOf, choice, fitKernel, inParts, kernelStatements, largestIn, let_, monotoneSize, overflowing, REDUCED, type Reduced, type ReductionProblem, relation, scaledStatements, tooSmall, underflow, valueRange, vanishing, withUnderflow } from './kernel.ts';
+import { arithmeticOf, choice, fitKernel, inParts, kernelStatements, largestIn, let_, monotoneSize, overflowing, REDUCED, type Reduced, type ReductionProblem, relation, requireSolid, scaledStatements, tooSmall, underflow, valueRange, vanishing, withUnderflow } from './kernel.ts';
 import { decomposed, exponentRange, HALVED_ABOVE } from './logarithm.ts';
 import { nearestInteger, roundedUp } from './parts.ts';
 import { CONSTANT_BITS } from './recognise.ts';
@@ -60,6 +60,7 @@ export function reducePower(problem: ReductionProblem, exponent: Rational, budge
   const bounds = ends.map((b) => (b ? largestIn(b) : Q.ZERO));
   const spread = powerOfTwo(Math.ceil(Math.abs(n) / 2) + 1);
   const inside = { most: Q.multiply(bounds.reduce((a, b) => (Q.compare(a, b) > 0 ? a : b)), spread), least: Q.divide(bounds.reduce((a, b) => (Q.compare(a, b) < 0 ? a : b)), spread) };
+  requireSolid(kernel, inside.least, format);
   const multiples = [from * n, to * n];
   const scaled = scaledStatements(product, k, Math.min(...multiples), Math.max(...multiples), inside, (m) => nearest(build.product(m, build.number(Q.HALF))), operations);
   const x = build.symbol(parameter);

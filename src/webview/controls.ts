@@ -121,6 +121,16 @@ function named<E extends HTMLElement>(element: E, id: string, label: string): E 
   return element;
 }
 
+const TYPED = ['variable', 'from', 'to', 'tolerance', 'point'] as const;
+function typedIn(form: HTMLFormElement): Partial<Pick<CodeControls, (typeof TYPED)[number]>> {
+  return Object.fromEntries(
+    TYPED.flatMap((name) => {
+      const control = form.querySelector(`#${name}`);
+      return control instanceof HTMLInputElement ? [[name, control.value.trim()]] : [];
+    }),
+  );
+}
+
 export function codeControls(kind: 'fit' | 'guard', controls: CodeControls, settle: (controls: CodeControls) => void): HTMLElement {
   let current = controls;
   const change = (part: Partial<CodeControls>): void => {
@@ -163,6 +173,8 @@ export function codeControls(kind: 'fit' | 'guard', controls: CodeControls, sett
       on: {
         submit: (event) => {
           event.preventDefault();
+          // What was typed while the page was drawn anew is in the fields only.
+          if (event.currentTarget instanceof HTMLFormElement) change(typedIn(event.currentTarget));
           settle(current);
         },
       },

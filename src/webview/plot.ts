@@ -139,9 +139,11 @@ export function fitErrorPlot(plot: FitPlotAnswer, width: number): HTMLElement {
   const peak = worst(plot.x, plot.error);
   const drawn = tolerance !== null && tolerance < y.high;
   const value = (size: number): string => `${short(size)}${unit}`;
+  // A bound is shown rounded up.
+  const proven = t('provenBound', `${shortened(String(bound), 'above')}${unit}`);
   const said = [
     peak ? t('fitWorst', value(Math.abs(peak.error)), short(peak.at)) : '',
-    t('provenBound', value(bound)),
+    proven,
     tolerance === null ? '' : drawn ? t('toleranceBand', value(tolerance)) : t('toleranceOutside', value(tolerance)),
   ].filter(Boolean);
   const level = (kind: string, size: number): SVGElement[] => [size, -size].map((at) => svg('line', { class: kind, x1: LEFT, x2: width - RIGHT, y1: area.toY(at).toFixed(1), y2: area.toY(at).toFixed(1) }));
@@ -149,7 +151,7 @@ export function fitErrorPlot(plot: FitPlotAnswer, width: number): HTMLElement {
     drawn ? svg('rect', { class: 'band', x: LEFT, width: Math.max(1, width - LEFT - RIGHT), y: area.toY(tolerance).toFixed(1), height: (area.toY(-tolerance) - area.toY(tolerance)).toFixed(1) }) : null,
     ...axes(
       area,
-      ticks(y, 4).map((at) => ({ at, label: short(at) })),
+      ticks(y, 6).map((at) => ({ at, label: short(at) })),
     ),
     ...(drawn ? level('tolerance', tolerance) : []),
     ...level('bound', bound),
@@ -159,8 +161,8 @@ export function fitErrorPlot(plot: FitPlotAnswer, width: number): HTMLElement {
     'figure',
     { id: 'fit-plot' },
     image,
-    h('figcaption', {}, key('error', t('error')), key('bound', t('provenBound', value(bound))), drawn && key('tolerance', t('toleranceBand', value(tolerance)))),
-    h('p', { class: 'note' }, said.filter((part) => !part.startsWith(t('provenBound', value(bound)))).join('; ')),
+    h('figcaption', {}, key('error', t('error')), key('bound', proven), drawn && key('tolerance', t('toleranceBand', value(tolerance)))),
+    h('p', { class: 'note' }, said.filter((part, i) => part !== proven && !(drawn && i === said.length - 1)).join('; ')),
     h('p', { class: 'muted note' }, t('fitPlotNote')),
   );
 }

@@ -3,7 +3,7 @@ import type { Element, Field } from '../../algebra/types.ts';
 import type { Budget } from '../../outcome.ts';
 import { Declined } from '../../outcome.ts';
 import { Q } from '../../expression/index.ts';
-import { addSums, multiplySums, NONE, one, scalarOf, scaleSum, type Sum } from './words.ts';
+import { addSums, NONE, one, scalarOf, scaleSum, type Sum, sumOfProducts } from './words.ts';
 
 /** sum of terms[k] s^(start + k); beyond its terms it is zero where `exact`, else unknown. The first term is not zero. */
 export interface OperatorSeries {
@@ -43,19 +43,18 @@ export function addSeries(s: Setting, a: OperatorSeries, b: OperatorSeries): Ope
   return normal(start, terms, end === Infinity);
 }
 
-export function multiplySeries(s: Setting, a: OperatorSeries, b: OperatorSeries): OperatorSeries {
+/** `below`: powers of s from there on are left out. */
+export function multiplySeries(s: Setting, a: OperatorSeries, b: OperatorSeries, below = Infinity): OperatorSeries {
   if (isZeroSeries(a) || isZeroSeries(b)) return constantSeries(NONE);
   const start = a.start + b.start;
   const end = Math.min(endOf(a) + b.start, endOf(b) + a.start);
-  const length = end === Infinity ? a.terms.length + b.terms.length - 1 : Math.min(end - start, s.width);
-  const terms: Sum[] = Array.from({ length }, () => NONE);
-  a.terms.forEach((x, i) => {
-    for (let j = 0; j < b.terms.length && i + j < length; j += 1) {
-      s.budget.check();
-      terms[i + j] = addSums(s.field, terms[i + j] ?? NONE, multiplySums(s.field, x, b.terms[j] ?? NONE));
-    }
+  const full = end === Infinity ? a.terms.length + b.terms.length - 1 : Math.min(end - start, s.width);
+  const length = Math.min(full, Math.max(0, below - start));
+  const terms = Array.from({ length }, (_, n) => {
+    const pairs = a.terms.slice(0, n + 1).map((x, i) => [x, b.terms[n - i] ?? NONE] as const);
+    return sumOfProducts(s.field, pairs, s.budget.check);
   });
-  return normal(start, terms, end === Infinity);
+  return normal(start, terms, end === Infinity && length === full);
 }
 
 export const scaleSeries = (s: Setting, a: OperatorSeries, factor: Element): OperatorSeries => normal(a.start, a.terms.map((t) => scaleSum(s.field, t, factor)), a.exact);
@@ -80,7 +79,7 @@ export function composed(s: Setting, x: OperatorSeries, coefficient: (k: number)
   if (x.start < 1) throw new Error('composition with a series that does not vanish');
   let power = constantSeries(one(Q.ONE));
   for (let k = 1; k * x.start < s.width; k += 1) {
-    power = multiplySeries(s, power, x);
+    power = multiplySeries(s, power, x, s.width);
     total = addSeries(s, total, scaleSeries(s, power, coefficient(k)));
   }
   const terms = Array.from({ length: s.width }, (_, k) => total.terms[k - total.start] ?? NONE);

@@ -24,22 +24,43 @@ function join(a: Word, b: Word): Word {
   return [...a.slice(0, a.length - cut), ...b.slice(cut)];
 }
 
-function collect(field: Field, summands: Iterable<Summand>): Sum {
-  const found = new Map<string, Summand>();
-  for (const { word, coefficient } of summands) {
+/** Adds up summands by word, then drops those whose coefficient is zero. */
+class Collector {
+  readonly #found = new Map<string, Summand>();
+  constructor(private readonly field: Field) {}
+
+  add(word: Word, coefficient: Element): void {
     const key = keyOf(word);
-    const known = found.get(key);
-    found.set(key, { word, coefficient: known ? field.add(known.coefficient, coefficient) : coefficient });
+    const known = this.#found.get(key);
+    this.#found.set(key, { word, coefficient: known ? this.field.add(known.coefficient, coefficient) : coefficient });
   }
-  for (const [key, { coefficient }] of found) if (isRational(coefficient) ? Q.isZero(coefficient) : field.isZero(coefficient) === 'yes') found.delete(key);
-  return found;
+
+  total(): Sum {
+    for (const [key, { coefficient }] of this.#found) if (isRational(coefficient) ? Q.isZero(coefficient) : this.field.isZero(coefficient) === 'yes') this.#found.delete(key);
+    return this.#found;
+  }
+}
+
+function collect(field: Field, summands: Iterable<Summand>): Sum {
+  const all = new Collector(field);
+  for (const { word, coefficient } of summands) all.add(word, coefficient);
+  return all.total();
 }
 
 export const addSums = (field: Field, a: Sum, b: Sum): Sum => (a.size === 0 ? b : b.size === 0 ? a : collect(field, [...a.values(), ...b.values()]));
 export const scaleSum = (field: Field, a: Sum, factor: Element): Sum => collect(field, [...a.values()].map((s) => ({ word: s.word, coefficient: field.multiply(s.coefficient, factor) })));
-/** Cost: the product of the numbers of words. */
-export const multiplySums = (field: Field, a: Sum, b: Sum): Sum =>
-  a.size === 0 || b.size === 0 ? NONE : collect(field, [...a.values()].flatMap((x) => [...b.values()].map((y) => ({ word: join(x.word, y.word), coefficient: field.multiply(x.coefficient, y.coefficient) }))));
+/** The sum of the products of pairs. Cost: for each pair, the product of the numbers of words. */
+export function sumOfProducts(field: Field, pairs: readonly (readonly [Sum, Sum])[], check: () => void = () => undefined): Sum {
+  const all = new Collector(field);
+  for (const [a, b] of pairs) {
+    for (const x of a.values()) {
+      check();
+      for (const y of b.values()) all.add(join(x.word, y.word), field.multiply(x.coefficient, y.coefficient));
+    }
+  }
+  return all.total();
+}
+export const multiplySums = (field: Field, a: Sum, b: Sum): Sum => sumOfProducts(field, [[a, b]]);
 
 /** The multiple of the identity that the sum is; null where it holds a letter. */
 export function scalarOf(a: Sum): Element | null {

@@ -1,9 +1,11 @@
 /** Requests whose text is a differential equation: which of its solution's expansions is asked for. */
-import { type Assumption, build, dependsOn, type Expression, freeSymbols, type Rational, walk } from '../expression/index.ts';
+import { type Assumption, build, dependsOn, type Expression, freeSymbols, Q, type Rational, walk } from '../expression/index.ts';
 import { type DifferentialStatement, differentialStatement, expandPerturbation, expandSolution, type Expansion } from '../expand/index.ts';
+import { describe } from '../functions/index.ts';
 import { type Budget, Declined, failure, type Outcome, success } from '../outcome.ts';
 import type { ExpandAnswer, ExpandRequest } from '../protocol.ts';
 import { isBareName, isTruncated, readAssumption } from '../read/index.ts';
+import { encloseReal, real } from '../rigorous/index.ts';
 import { readAllAssumptions } from './assumptions.ts';
 import { statedConditions, withValues } from './conditions.ts';
 import { expansionAnswer } from './expansionAnswer.ts';
@@ -152,7 +154,7 @@ export function equationAnswer(request: ExpandRequest, source: SourceFormula, si
 
 /**
  * Whether an equation without derivatives is to be simplified in place rather than a side of it expanded: it is set to zero, or the side that would be expanded
- * does not hold the variable, or functions of the variable stand on both sides. A name = formula stays a formula.
+ * does not hold the variable, or functions of the variable stand on both sides that are not two ways to write one function. A name = formula stays a formula.
  */
 function isPlainEquation(request: ExpandRequest, formula: Expression, variable: Expression): boolean {
   if (request.unknown !== undefined || formula.kind !== 'relation' || variable.kind !== 'symbol') return false;
@@ -162,5 +164,21 @@ function isPlainEquation(request: ExpandRequest, formula: Expression, variable: 
   const holds = (e: Expression): boolean => dependsOn(e, variable.name);
   if (isZero(left) || isZero(right)) return true;
   if (isBareName(left) && !(left.kind === 'symbol' && left.name === variable.name)) return false;
-  return holds(left) !== holds(right) ? !holds(functionOf(formula)) || holds(left) : holds(left) && request.selection === undefined;
+  if (holds(left) !== holds(right)) return !holds(functionOf(formula)) || holds(left);
+  return holds(left) && request.selection === undefined && differSurely(left, right);
 }
+
+const TRIAL_BITS = 64;
+/** Arguments of no special meaning: an identity holds at all of them. */
+const TRIALS = [Q.rational(3, 7), Q.rational(9, 8), Q.rational(-2, 7), Q.rational(17, 6)];
+
+/** Whether two sides have provably different values somewhere, every symbol taken as some number: then they are no two ways to write one function. */
+function differSurely(left: Expression, right: Expression): boolean {
+  const names = [...new Set([...freeSymbols(left), ...freeSymbols(right)])];
+  return TRIALS.some((_, k) => {
+    const values = new Map(names.map((name, i) => [name, real.fromRational(TRIALS[(k + i) % TRIALS.length] ?? Q.ONE, TRIAL_BITS)]));
+    const [a, b] = [left, right].map((side) => encloseReal(side, values, TRIAL_BITS, describe));
+    return a !== null && a !== undefined && b !== null && b !== undefined && !real.overlaps(a, b);
+  });
+}
+

@@ -1,0 +1,18 @@
+/** Which side of an equation is expanded, or both in place. Identities: DLMF 10.49.3 (spherical Bessel function), 4.35.9. */
+import { describe, expect, it } from 'vitest';
+import { ask } from '../fit/engine.ts';
+
+async function answered(text: string, variable = 'x'): Promise<{ readonly text: string; readonly replaced: boolean }> {
+  const answer = await ask({ ask: 'expand', language: 'latex', text, variable, terms: 2 });
+  if (!answer.ok || !('text' in answer)) throw new Error(JSON.stringify(answer));
+  return { text: answer.text, replaced: answer.replaced !== undefined };
+}
+
+describe('equations without derivatives', () => {
+  it.each([
+    ['\\mathsf{j}_1(x)=\\frac{\\sin x}{x^{2}}-\\frac{\\cos x}{x}', 'x/3 − x³/30 + O(x⁵)'],
+    ['\\cosh 2x = 2\\cosh^2 x - 1', '1 + 2x² + O(x⁴)'],
+    ['f(x) = \\frac{\\sin x}{x}', '1 − x²/6 + O(x⁴)'],
+  ])('two ways to write one function: %s', async (text, expected) => expect(await answered(text)).toEqual({ text: expected, replaced: false }));
+  it.each(['\\tan x = 2 \\sin x', '\\sin x - x\\cos x = 0', '\\tan x = \\frac{v^2}{r g}'])('an equation to be simplified in place: %s', async (text) => expect((await answered(text)).replaced).toBe(true));
+});

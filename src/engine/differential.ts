@@ -31,13 +31,14 @@ export interface DifferentialQuestion {
 }
 
 /**
- * Null where the text holds no differential equation. Three kinds:
+ * Null where the text holds no differential equation, or a function at shifted arguments and no `unknown`. Three kinds:
  * - with initial values, or with `unknown`: the solution, in powers of the independent variable, or of another variable that is named (a small parameter);
  * - without both, and a `variable` that is not the independent one: the equation simplified in place, in that variable (often the unknown function itself);
  * - with neither and no variable: the solution with free constants, if the equation is linear in its unknown; else in place for a small unknown.
  */
 export function differentialQuestion(request: ExpandRequest, source: SourceFormula): Outcome<DifferentialQuestion> | null {
   const pieces = [source.formula ?? source.expression, ...source.conditions];
+  if (request.unknown === undefined && pieces.some(hasShift)) return null;
   const named = request.variable === undefined ? null : source.readSymbol(request.variable);
   const variable = named?.ok ? named.value : undefined;
   const unknownRead = request.unknown === undefined ? null : source.readSymbol(request.unknown);
@@ -57,6 +58,9 @@ export function differentialQuestion(request: ExpandRequest, source: SourceFormu
     throw error;
   }
 }
+
+/** A function at a shifted argument (`f(x+h)`, `y(t - \\tau)`): a difference formula, which is expanded in the shift. */
+const hasShift = (piece: Expression): boolean => [...walk(piece)].some((e) => e.kind === 'apply' && e.args.some((a) => a.kind === 'sum' && freeSymbols(a).length > 0));
 
 function questionOf(request: ExpandRequest, whole: DifferentialStatement, asked: { readonly unknown: string | undefined; readonly variable: Expression | undefined }, assumptions: readonly Assumption[]): Outcome<DifferentialQuestion> {
   const small = asked.variable ?? smallCondition(whole);
@@ -157,7 +161,7 @@ export function equationAnswer(request: ExpandRequest, source: SourceFormula, si
  * does not hold the variable, or functions of the variable stand on both sides that are not two ways to write one function. A name = formula stays a formula.
  */
 function isPlainEquation(request: ExpandRequest, formula: Expression, variable: Expression): boolean {
-  if (request.unknown !== undefined || formula.kind !== 'relation' || variable.kind !== 'symbol') return false;
+  if (request.unknown !== undefined || formula.kind !== 'relation' || variable.kind !== 'symbol' || hasShift(formula)) return false;
   const [left, right] = formula.sides;
   if (!left || !right || formula.sides.length !== 2 || formula.relations[0] !== '=' || isTruncated(left) || isTruncated(right)) return false;
   const isZero = (e: Expression): boolean => e.kind === 'number' && e.value.num === 0n;

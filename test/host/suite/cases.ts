@@ -1,4 +1,3 @@
-/* eslint-disable no-console -- the suite reports through the console of its host */
 /** What the extension must do in every host. Results come from the engine; the values are textbook expansions. */
 import * as vscode from 'vscode';
 import type { Api } from '../../../src/editor/activate.ts';

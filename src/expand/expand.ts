@@ -11,8 +11,8 @@ import { isEvenInRoot } from './even-root.ts';
 import { generalTerm } from './general.ts';
 import { radiusOf } from './radius.ts';
 import { expandSide, type SideResult } from './side.ts';
-import { expandOperators, type Letters, lettersOf } from './noncommuting/index.ts';
-import { expandVectors, hasVectors, isVectorFormula } from './vectors/index.ts';
+import { commutingCapitals, expandOperators, type Letters, lettersOf } from './noncommuting/index.ts';
+import { expandVectors, hasVectors, isVectorFormula, requireLinearInFunctions } from './vectors/index.ts';
 
 /**
  * The expansion of problem.function in problem.variable (a symbol, or a quantity like v/c taken as one) at the point, to `terms` terms or to `order`.
@@ -28,12 +28,18 @@ export function expand(problem: ExpansionProblem, budget: Budget): Outcome<Expan
 /** Operators and vectors have rules of their own; what they leave to do is scalar. */
 function inLetters(problem: ExpansionProblem, budget: Budget): Expansion {
   const scalar = (inner: ExpansionProblem): Expansion => inVariable(inner, budget);
+  requireLinearInFunctions(problem.function);
   const vectors = hasVectors(problem.function);
   const letters = vectors && isVectorFormula(problem.function) ? null : lettersOf(problem.function, problem.assumptions);
   if (letters && letters.operators.size === 1 && !vectors) return oneOperator(problem, letters, budget);
   if (letters) return expandOperators(problem, letters, budget, scalar);
-  return vectors ? expandVectors(problem, budget, scalar) : scalar(problem);
+  if (vectors) return expandVectors(problem, budget, scalar);
+  const capitals = commutingCapitals(problem.function, problem.variable);
+  const found = scalar(problem);
+  return capitals.length === 0 ? found : withAssumption(found, `${capitals.join(', ')} commute (assume "${capitals.join(', ')} do not commute" if they are operators)`);
 }
+
+const withAssumption = (x: Expansion, assumption: string): Expansion => ({ ...x, assumptions: [...x.assumptions, assumption], ...(x.left ? { left: withAssumption(x.left, assumption) } : {}) });
 
 /** Everything made of one operator commutes: what has no expansion in words is left to the commuting rules. */
 function oneOperator(problem: ExpansionProblem, letters: Letters, budget: Budget): Expansion {

@@ -13,7 +13,7 @@ import { expandSmallOperators, lettersOf } from './noncommuting/index.ts';
 import { openSession } from './session.ts';
 import { openContext } from './open-side.ts';
 import { expandScaled } from './scaled.ts';
-import { expandSmallVectors, hasVectors, isVectorFormula } from './vectors/index.ts';
+import { expandSmallVectors, hasVectors, isVectorFormula, requireLinearInFunctions } from './vectors/index.ts';
 
 /**
  * Each quantity q becomes point + s^weight q, the function is expanded in s -> 0+, then s = 1: terms are blocks of equal weight, coefficients are homogeneous in the quantities.
@@ -22,6 +22,7 @@ import { expandSmallVectors, hasVectors, isVectorFormula } from './vectors/index
 export function expandSmall(problem: SmallProblem, budget: Budget): Outcome<Expansion> {
   return attempt(() => {
     requireShallow(problem.function);
+    requireLinearInFunctions(problem.function);
     const vectors = hasVectors(problem.function);
     const letters = vectors && isVectorFormula(problem.function) ? null : lettersOf(problem.function, problem.assumptions);
     if (problem.quantities.length === 0 || problem.quantities.some((q) => q.symbol.kind !== 'symbol' && !vectors)) throw new Declined('bad-request', 'Name the small quantities, each by one symbol.');

@@ -1,5 +1,7 @@
 /** Names of symbols in each notation. Canonical names are LaTeX without needless braces, or identifiers of code. */
 
+import { BOLD, setBold } from '../expression/index.ts';
+
 const GREEK: Readonly<Record<string, string>> = {
   alpha: 'α', beta: 'β', gamma: 'γ', delta: 'δ', epsilon: 'ϵ', varepsilon: 'ε', zeta: 'ζ', eta: 'η', theta: 'θ', vartheta: 'ϑ', iota: 'ι', kappa: 'κ', lambda: 'λ', mu: 'μ',
   nu: 'ν', xi: 'ξ', omicron: 'ο', pi: 'π', varpi: 'ϖ', rho: 'ρ', varrho: 'ϱ', sigma: 'σ', varsigma: 'ς', tau: 'τ', upsilon: 'υ', phi: 'ϕ', varphi: 'φ', chi: 'χ', psi: 'ψ', omega: 'ω',
@@ -17,15 +19,32 @@ export function latexSymbol(name: string): string {
   return `\\mathrm{${name.replace(/([_#$%&])/g, '\\$1')}}`;
 }
 
-/** One-line Unicode: `\epsilon` -> ϵ, `v_0` -> v₀, `k_B` stays. */
+/** Combining characters over a letter. Source: Unicode code charts, Combining Diacritical Marks and Combining Diacritical Marks for Symbols. */
+const ACCENTS: Readonly<Record<string, string>> = { hat: '\u0302', widehat: '\u0302', tilde: '\u0303', widetilde: '\u0303', bar: '\u0304', overline: '\u0304', dot: '\u0307', ddot: '\u0308', dddot: '\u20db' };
+const ACCENTED = new RegExp(`\\\\(${Object.keys(ACCENTS).join('|')})\\s*\\{([^{}]*)\\}`, 'g');
+const BOLD_TEXT = new RegExp(`\\\\(?:${[...BOLD].join('|')})\\s*\\{([^{}]*)\\}`, 'g');
+
+const greekLetters = (text: string): string => text.replace(/\\([A-Za-z]+)\s*/g, (whole, word: string) => GREEK[word] ?? word);
+/** `ẋ`, `θ̈₁`; over several letters a mark would stand beside the middle, so that it goes behind the first. */
+const accented = (whole: string, accent: string, letters: string): string => {
+  const [first = '', ...rest] = [...greekLetters(letters)];
+  return `${first}${ACCENTS[accent] ?? ''}${rest.join('')}`.normalize('NFC');
+};
+
+/** Primes as one character up to three: `y″`. */
+export const primes = (count: number): string => (['', '′', '″', '‴'][count] ?? '′'.repeat(count));
+
+/** One-line Unicode: `\epsilon` -> ϵ, `v_0` -> v₀, `\ddot{x}` -> ẍ, `\mathbf{r}` -> 𝐫; `k_B` stays. */
 export function unicodeSymbol(name: string): string {
-  const plain = name
-    .replace(/\^(?:\\dagger|\{\\dagger\})/g, '†')
-    .replace(/\\(?:mathrm|mathbf|boldsymbol|bm|pmb|mathit|text|operatorname|bar|tilde|vec|dot)\s*\{([^{}]*)\}/g, '$1')
-    .replace(/\\(?:wide)?hat\s*\{([^{}]*)\}/g, '$1\u0302')
-    .replace(/\\([A-Za-z]+)\s*/g, (whole, word: string) => GREEK[word] ?? word)
+  const plain = greekLetters(
+    name
+      .replace(/\^(?:\\dagger|\{\\dagger\})/g, '†')
+      .replace(BOLD_TEXT, (whole, letters: string) => setBold(greekLetters(letters)))
+      .replace(/\\(?:mathrm|mathit|text|operatorname)\s*\{([^{}]*)\}/g, '$1')
+      .replace(ACCENTED, accented),
+  )
     .replace(/\{([^{}]*)\}/g, '$1')
-    .replace(/'/g, '′');
+    .replace(/'+/g, (marks) => primes(marks.length));
   return plain.replace(/_(\d+)/g, (whole, digits: string) => [...digits].map((d) => SUBSCRIPT_DIGITS[Number(d)]).join(''));
 }
 

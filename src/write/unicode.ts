@@ -5,7 +5,7 @@ import { asPiece } from './mpmath.ts';
 import { runs } from './layout.ts';
 import { describe } from './names.ts';
 import { enclosedArguments } from './template.ts';
-import { superscript, unicodeSymbol } from './symbols.ts';
+import { primes, superscript, unicodeSymbol } from './symbols.ts';
 
 const CONSTANTS: Readonly<Record<ConstantName, string>> = { pi: 'π', e: 'e', i: 'i', eulerGamma: 'γ', catalan: 'G', glaisher: 'A', infinity: '∞' };
 const RELATIONS: Readonly<Record<string, string>> = { about: '≈', tilde: '∼', to: '→', define: ':=', '<=': '≤', '>=': '≥', '!=': '≠', propto: '∝', ll: '≪', gg: '≫' };
@@ -70,7 +70,7 @@ const UNICODE: Dialect = {
       case 'apply': {
         const [only = 0] = e.derivatives;
         const name = unicodeSymbol(e.name);
-        const mark = e.derivatives.length > 1 ? (e.derivatives.some((d) => d > 0) ? `^(${e.derivatives.join(',')})` : '') : only <= 3 ? '′'.repeat(only) : `⁽${superscript(`${only}`) ?? only}⁾`;
+        const mark = e.derivatives.length > 1 ? (e.derivatives.some((d) => d > 0) ? `^(${e.derivatives.join(',')})` : '') : only <= 3 ? primes(only) : `⁽${superscript(`${only}`) ?? only}⁾`;
         return atom(`${name}${mark}${e.args.length === 0 ? '' : `(${list(e.args, write)})`}`);
       }
       case 'order':
@@ -148,7 +148,7 @@ function unicodeName(id: string): string {
   if (first === undefined) return id;
   const operator = /^\\operatorname\*?\{(.*)\}$/.exec(first);
   const name = operator?.[1] ?? unicodeSymbol(first);
-  return /^[\p{L}\p{N}′₀-₉]+$/u.test(name) ? name : id;
+  return /^[\p{L}\p{M}\p{N}′″‴₀-₉]+$/u.test(name) ? name : id;
 }
 
 /** Factors that need no dot between them: a number before letters, single letters, a parenthesis after a number. */
@@ -157,7 +157,7 @@ function standsTogether(left: string, leftFactor: Expression, right: string, rig
   const letterStarts = /^[\p{L}√]/u.test(right);
   const oneLetter = (e: Expression): boolean => {
     const base = e.kind === 'power' ? e.base : e;
-    return (base.kind === 'symbol' && /^\p{L}[₀-₉′]*$/u.test(unicodeSymbol(base.name))) || (base.kind === 'constant' && base.name === 'pi');
+    return (base.kind === 'symbol' && /^\p{L}\p{M}*[₀-₉′″‴]*$/u.test(unicodeSymbol(base.name))) || (base.kind === 'constant' && base.name === 'pi');
   };
   const afterNumber = leftFactor.kind === 'number' && /^\d+$/.test(left);
   if (afterNumber) return letterStarts || right.startsWith('(');

@@ -15,9 +15,9 @@ describe('equations without derivatives', () => {
     ['f(x) = \\frac{\\sin x}{x}', '1 − x²/6 + O(x⁴)'],
   ])('two ways to write one function: %s', async (text, expected) => expect(await answered(text)).toEqual({ text: expected, replaced: false }));
   it.each([
-    ["y''(t+h)", 'h', "y′′(t) + y′′′(t)·h + O(h²)"],
-    ["\\frac{f(x+h)-f(x-h)}{2h} = f'(x)", 'h', 'f′(x) + f′′′(x)·h²/6 + O(h⁴)'],
-    ["f'(x) \\approx \\frac{f(x+h)-f(x)}{h}", 'h', 'f′(x) + f′′(x)·h/2 + O(h²)'],
+    ["y''(t+h)", 'h', "y″(t) + y‴(t)·h + O(h²)"],
+    ["\\frac{f(x+h)-f(x-h)}{2h} = f'(x)", 'h', 'f′(x) + f‴(x)·h²/6 + O(h⁴)'],
+    ["f'(x) \\approx \\frac{f(x+h)-f(x)}{h}", 'h', 'f′(x) + f″(x)·h/2 + O(h²)'],
     ["y(t+\\tau) = y(t) + \\tau y'(t)", '\\tau', 'y(t) + y′(t)·τ + O(τ²)'],
   ])('a difference formula: %s', async (text, variable, expected) => expect(await answered(text, variable)).toEqual({ text: expected, replaced: false }));
   it.each(['\\tan x = 2 \\sin x', '\\sin x - x\\cos x = 0', '\\tan x = \\frac{v^2}{r g}'])('an equation to be simplified in place: %s', async (text) => expect((await answered(text)).replaced).toBe(true));

@@ -193,3 +193,9 @@ describe('the remainder has the stated order for random matrices', () => {
     }
   });
 });
+
+describe('plain capitals that are not declared', () => {
+  const note = (text: string): string | undefined => expanded(text, 2, '\\epsilon', []).assumptions.find((a) => a.includes('commute'));
+  for (const text of [String.raw`e^{\epsilon A} B e^{-\epsilon A}`, String.raw`e^{\epsilon A} e^{\epsilon B}`, String.raw`(A + \epsilon B)^{-1}`, String.raw`A^{-1} (B + \epsilon) A`]) it(`${text}: commuting is an assumption`, () => expect(note(text)).toMatch(/^A, B commute/));
+  for (const text of [String.raw`\frac{A}{1 + \epsilon B}`, String.raw`N e^{-\epsilon E/T}`, String.raw`(1 + \epsilon A)^{-1}`]) it(`${text}: nothing is assumed`, () => expect(note(text)).toBeUndefined());
+});

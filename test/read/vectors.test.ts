@@ -79,3 +79,27 @@ describe('which vector is small', () => {
     expect(formula.ok && candidates(formula.value.expression, { conditions: formula.value.conditions }).found?.variable.name).toBe(String.raw`\mathbf{r}'`);
   });
 });
+
+describe('a bracket behind a bold letter', () => {
+  const rows: readonly (readonly [string, string])[] = [
+    [String.raw`\mathbf{u}(t)`, String.raw`\mathbf{u}[t]`],
+    [String.raw`\vec{x}(t_0)`, String.raw`\vec{x}[t_0]`],
+    [String.raw`\mathbf{u}(x, t)`, String.raw`\mathbf{u}[x,t]`],
+    [String.raw`\mathbf{x}(t + \Delta t)`, String.raw`\mathbf{x}[t+\Delta t]`],
+    [String.raw`\mathbf{B}(\mathbf{r})`, String.raw`\mathbf{B}[\mathbf{r}]`],
+    [String.raw`\mathbf{a}(1 + \epsilon)`, String.raw`\mathbf{a}*1+\epsilon`],
+    [String.raw`\mathbf{A}(\mathbf{B} + \mathbf{C})`, String.raw`\mathbf{A}*\mathbf{B}+\mathbf{C}`],
+  ];
+  for (const [text, wanted] of rows) it(text, () => expect(shape(read(text))).toBe(wanted));
+  it('is not guessed', () => expect(readLatex(String.raw`\mathbf{a}(b + c)`).ok).toBe(false));
+});
+
+describe('an initial value that is being typed', () => {
+  for (const text of ["y' = y, y(0) =", "y'' + y = 0, y(0) = 1, y'(0) =", String.raw`\dot x = x, x(0)=`, "y' = y, y(0", "y' = y, y("]) {
+    it(`${text} is unreadable`, () => {
+      const found = readFormula(text, 'latex');
+      expect(found.ok ? null : found.error.code).toBe('unreadable');
+    });
+  }
+  it('leaves other formulas readable', () => expect(readFormula(String.raw`\sin x, f(x) =`, 'latex').ok).toBe(true));
+});

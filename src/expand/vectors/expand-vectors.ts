@@ -3,7 +3,7 @@ import { type Assumption, build, type Expression, freeSymbols, mapChildren, Q, t
 import { type Budget, Declined } from '../../outcome.ts';
 import type { Expansion, ExpansionProblem, ExpansionTerm, SmallProblem } from '../expansion.ts';
 import { expandScaled, type ScaledSymbol } from '../scaled.ts';
-import { Frame, letterKey } from './frame.ts';
+import { boldLetter, Frame, letterKey, plainLetter } from './frame.ts';
 import { fieldOf, lower, type Lowering, stepName } from './lower.ts';
 
 type Size = Pick<ExpansionProblem, 'terms' | 'order' | 'assumptions'>;
@@ -148,9 +148,9 @@ function lifted(l: Lowering, x: Expansion): Expansion {
   const maybe = (e: Expression | null): Expression | null => (e === null ? null : back(e));
   const terms = x.terms.map((t): ExpansionTerm => ({ ...t, coefficient: back(t.coefficient), power: back(t.power), scale: maybe(t.scale) }));
   const used = new Set([...terms.map((t) => t.coefficient), x.local].flatMap(freeSymbols));
-  const names = [...l.frame.lengths].filter(([name]) => used.has(name)).map(([name, node]) => `${name} = |${nameOf(node)}|`);
+  const names = [...l.frame.lengths].filter(([name]) => used.has(name)).map(([name, node]) => `${plainLetter(name)} = |${boldLetter(nameOf(node))}|`);
   const divisors = new Set(terms.flatMap((t) => divided(t.coefficient)));
-  const fixed = [...used].filter((name) => divisors.has(name)).filter((name) => l.frame.lengths.has(name) && Q.signOf(l.frame.quantities.get(name)?.weight ?? Q.ONE) === 0).map((name) => `${name} > 0`);
+  const fixed = [...used].filter((name) => divisors.has(name)).filter((name) => l.frame.lengths.has(name) && Q.signOf(l.frame.quantities.get(name)?.weight ?? Q.ONE) === 0).map((name) => `${plainLetter(name)} > 0`);
   const texts = x.assumptions.map((a) => [...l.frame.quantities].reduce((text, [name, q]) => (/ /.test(name) ? text.replaceAll(name, meaningText(q.meaning)) : text), a));
   return {
     ...x,
@@ -159,7 +159,7 @@ function lifted(l: Lowering, x: Expansion): Expansion {
     prefactor: maybe(x.prefactor),
     ...(x.general ? { general: back(x.general) } : {}),
     ...(x.radius ? { radius: { value: maybe(x.radius.value), ...(x.radius.nearest ? { nearest: back(x.radius.nearest) } : {}) } } : {}),
-    assumptions: [...new Set([...texts, ...fixed, ...names, ...[...l.frame.units].map((name) => `|${name}| = 1`)])],
+    assumptions: [...new Set([...texts, ...fixed, ...names, ...[...l.frame.units].map((name) => `|${boldLetter(name)}| = 1`)])],
   };
 }
 
@@ -184,12 +184,12 @@ function meaningText(e: Expression): string {
   const inner = e.args.map(meaningText);
   switch (e.operation) {
     case 'dot':
-      return `(${inner.join('\\cdot')})`;
+      return `(${inner.join('·')})`;
     case 'cross':
-      return `(${inner.join('\\times')})`;
+      return `(${inner.join('×')})`;
     case 'norm':
       return `|${inner.join('')}|`;
     default:
-      return nameOf(e);
+      return boldLetter(nameOf(e));
   }
 }

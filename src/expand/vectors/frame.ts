@@ -2,7 +2,7 @@
  * The vectors of one formula as symbols of scalars: a length |a| for each, a dot product a.b for each pair, a triple product a.(b x c).
  * A vector is a combination of these letters and of their cross products; every product of vectors is multilinear in them.
  */
-import { build, type Expression, Q, type Rational } from '../../expression/index.ts';
+import { build, type Expression, Q, type Rational, setBold } from '../../expression/index.ts';
 
 /** A key of the basis: the index of a letter (`2`), or two ascending indices of a cross product (`0x2`). */
 export type BasisKey = string;
@@ -142,6 +142,17 @@ function bareName(name: string): string {
     bare = bare.replace(/\\(?:vec|mathbf|bm|boldsymbol|overrightarrow|pmb|mathbfit)\{([^{}]*)\}/, '$1');
   }
   return bare;
+}
+
+/** Greek by its word, no braces. */
+export const plainLetter = (name: string): string => bareName(name).replace(/\\(?:wide)?hat\{([^{}]*)\}/, '$1').replace(/\\([A-Za-z]+)/g, '$1').replace(/[{}]/g, '');
+
+/** The vector for a line of plain text: `𝐫'`, `𝐚_0`, `𝐧̂`, `vector xi`. */
+export function boldLetter(name: string): string {
+  const [letter = '', index] = plainLetter(name).split('_');
+  const hat = /\\(?:wide)?hat\{/.test(name) ? '\u0302' : '';
+  const single = /^([A-Za-z])('*)$/.exec(letter);
+  return `${single ? `${setBold(single[1] ?? '')}${hat}${single[2] ?? ''}` : `vector ${letter}`}${index === undefined ? '' : `_${index}`}`;
 }
 
 /** Letters that readers would take for a constant or an O-term are not used for a length. */

@@ -1,5 +1,5 @@
 /** A formula with vectors -> a formula in scalars: lengths, dot products and triple products as symbols, fields f(x + h) as functions of the amounts by which their argument moves. */
-import { build, dependsOn, type Expression, mapChildren, Q, type Rational, substitute, walk } from '../../expression/index.ts';
+import { build, dependsOn, type Expression, isVectorName, mapChildren, Q, type Rational, substitute, walk } from '../../expression/index.ts';
 import { Declined } from '../../outcome.ts';
 import type { BasisKey, Frame } from './frame.ts';
 
@@ -60,6 +60,7 @@ export function lower(l: Lowering, e: Expression): Value {
     case 'sum': {
       const values = e.terms.map((t) => lower(l, t));
       if (values.every(isScalar)) return { scalar: { ...e, terms: values.map((v) => v.scalar) } };
+      if (e.terms.some((t) => [...walk(t)].some((n) => n.kind === 'apply' && isVectorName(n.name)))) return refuse('A vector function and other vectors are not added here; write the others as functions too, such as \\mathbf{v}(t).');
       const vectors = values.map((v, k) => (isScalar(v) ? refuse(`A number and a vector are added here (${k + 1}. term); check the formula.`) : v));
       return combine(vectors.flatMap((v) => [...v.parts]));
     }

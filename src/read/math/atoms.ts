@@ -1,5 +1,5 @@
 /** The smallest pieces: numbers, brackets, bars, commands with arguments. */
-import { build, type Expression } from '../../expression/index.ts';
+import { BOLD, build, type Expression } from '../../expression/index.ts';
 import { bars, bracket, cases, fenced, group } from './brackets.ts';
 import { bracketArguments, applyKnown, ofMatrix, opensBracket } from './calls.ts';
 import { derivative, indexed, integral, limit, shortDerivative } from './calculus.ts';
@@ -11,7 +11,8 @@ import { indexExpression } from './letterFunctions.ts';
 import { name, order } from './names.ts';
 import { deeper, fail, isMark, named, next, node, peek, type State, within } from './state.ts';
 import { type Token, Unreadable } from './tokens.ts';
-import { between, BOLD } from './vectors.ts';
+import { vectorFunction } from './vectorFunctions.ts';
+import { between } from './vectors.ts';
 
 const DOTS = new Set('dots ldots cdots dotsb dotsc dotsi dotsm dotso vdots ddots'.split(' '));
 const ACCENTS = new Set('hat bar tilde dot ddot dddot check breve widehat widetilde overline mathring acute grave'.split(' '));
@@ -356,7 +357,7 @@ function decorated(p: State): Expression {
   }
   if (bold && value.kind === 'symbol') {
     if (/^\d+$/.test(content)) return node(p, from, build.number(BigInt(content)));
-    return node(p, from, { kind: 'vector', operation: 'symbol', name: value.name, args: [] });
+    return vectorFunction(p, from, value.name) ?? node(p, from, { kind: 'vector', operation: 'symbol', name: value.name, args: [] });
   }
   return value;
 }

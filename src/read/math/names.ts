@@ -1,5 +1,5 @@
 /** A name in a formula: symbol, constant, unspecified function, or special function written with a letter. */
-import { build, type Expression } from '../../expression/index.ts';
+import { BOLD, build, type Expression } from '../../expression/index.ts';
 import { lookupLatex } from '../../functions/index.ts';
 import { isName, nameText } from './facts.ts';
 import { resolve, wordName } from './functionNames.ts';
@@ -9,7 +9,6 @@ import { indexExpression, letterFunction } from './letterFunctions.ts';
 import { fail, isMark, next, node, peek, type State, within } from './state.ts';
 import { GREEK } from './unicode.ts';
 import { type Token, Unreadable } from './tokens.ts';
-import { BOLD } from './vectors.ts';
 
 /** Subscript text in canonical form: one character or command bare, more in braces, no spaces. */
 export function subscript(p: State): string {

@@ -1,5 +1,5 @@
 /** The door of the formula reader: text in, one formula with its trailing conditions out. */
-import type { Expression } from '../../expression/index.ts';
+import { type Expression, markedName, walk } from '../../expression/index.ts';
 import { failure, type Outcome, success } from '../../outcome.ts';
 import { atom, isTextName, startsFactor, texArgument } from './atoms.ts';
 import { infix } from './brackets.ts';
@@ -146,7 +146,10 @@ export function readFormula(text: string, notation: 'latex' | 'plain', options: 
         p.at = from;
         let end = from;
         while (!(isSeparator(p.tokens[end] as Token) && end > from) && p.tokens[end]?.kind !== 'end') end = Math.max(end + 1, (p.match[end] ?? -1) + 1);
-        remarks.push(text.slice(p.tokens[from]?.start ?? 0, p.tokens[end - 1]?.end ?? text.length));
+        const remark = text.slice(p.tokens[from]?.start ?? 0, p.tokens[end - 1]?.end ?? text.length);
+        // A value that is still being typed, `y' = y, y(0) =`, would be taken as not given.
+        if (/\)\s*=\s*$/.test(remark) && isDifferential(main)) throw error;
+        remarks.push(remark);
         p.at = end;
       }
     }
@@ -157,6 +160,8 @@ export function readFormula(text: string, notation: 'latex' | 'plain', options: 
     throw error;
   }
 }
+
+const isDifferential = (e: Expression): boolean => [...walk(e)].some((n) => n.kind === 'derivative' || (n.kind === 'apply' && n.derivatives.some((d) => d > 0)) || (n.kind === 'symbol' && markedName(n.name) !== null));
 
 /** One formula up to a separator. */
 function piece(p: State): Expression {

@@ -1,9 +1,7 @@
 /** Which pieces of a formula are vectors or operators, as far as the notation shows it. */
-import { type Expression, walk } from '../../expression/index.ts';
+import { BOLD, type Expression, isVectorName, walk } from '../../expression/index.ts';
 import type { Token } from './tokens.ts';
 
-/** Commands that set a letter bold or under an arrow. */
-export const BOLD: ReadonlySet<string> = new Set('vec mathbf bm boldsymbol overrightarrow pmb mathbfit'.split(' '));
 const HAT = /^\\(?:wide)?hat\{/;
 
 /** Sums, multiples and cross products of bold letters. Dot products and norms are scalars. */
@@ -11,6 +9,8 @@ export function isVectorValued(e: Expression): boolean {
   switch (e.kind) {
     case 'vector':
       return e.operation === 'symbol' || e.operation === 'cross';
+    case 'apply':
+      return isVectorName(e.name);
     case 'sum':
       return e.terms.some(isVectorValued);
     case 'negation':

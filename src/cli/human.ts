@@ -1,5 +1,5 @@
 /** Answers as text for a terminal. */
-import type { Answer, ExpandAnswer, FitAnswer, GuardAnswer, NeededAnswer } from '../protocol.ts';
+import type { Answer, ExpandAnswer, FitAnswer, GuardAnswer, NeededAnswer, ReplacedAnswer } from '../protocol.ts';
 
 const row = (label: string, value: string): string => `  ${label.padEnd(12)}${value}`;
 
@@ -25,6 +25,9 @@ function expansion(answer: ExpandAnswer, request: Readonly<Record<string, unknow
   }
   if (answer.needed) lines.push(row('needed', needed(answer.needed)));
   if (answer.at) lines.push(row('at', `${answer.at.argument}: function ${answer.at.function}, sum ${answer.at.sum}, error ${answer.at.error}${answer.at.percent === null ? '' : ` (${answer.at.percent} %)`}`));
+  if (answer.leastTerm) lines.push(row('best', `${answer.leastTerm.terms} terms at this argument; the first one left out is at most ${answer.leastTerm.size} there`));
+  for (const piece of answer.replaced ?? []) lines.push(row('replaced', `${piece.from} by ${piece.to}${relativeError(piece)}`));
+  for (const { unknown, expansion: found } of answer.components ?? []) lines.push(row('component', `${unknown}: ${found.text}`));
   if (answer.radius) lines.push(row('radius', `${answer.radius.value}${answer.radius.nearest ? ` (nearest singularity ${answer.radius.nearest})` : ''}`));
   if (answer.divergent) lines.push(row('series', 'divergent (asymptotic)'));
   if (answer.general) lines.push(row('general', answer.general));
@@ -33,6 +36,11 @@ function expansion(answer: ExpandAnswer, request: Readonly<Record<string, unknow
   for (const line of answer.left ? expansion(answer.left, {}) : []) lines.push(`  from the left: ${line.trim()}`);
   for (const branch of answer.branches ?? []) lines.push(`  branch: ${branch.text}`);
   return lines;
+}
+
+function relativeError({ relativeError: error }: ReplacedAnswer): string {
+  const parts = [...(error?.percent ? [`${error.percent} % there`] : []), ...(error?.bound ? [`at most ${error.bound} on the interval, proven`] : [])];
+  return parts.length === 0 ? '' : `; relative error ${parts.join(', ')}`;
 }
 
 function fit(answer: FitAnswer): string[] {

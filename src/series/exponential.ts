@@ -252,8 +252,6 @@ function exponentialOfLarge(c: Context, large: Multi): Multi {
   if (!lead) return Q.ONE;
   const real = isRational(lead.constant) ? 'yes' : c.field.isReal(lead.constant);
   if (real !== 'yes' || !isRealMulti(c, large)) return exponentialOfComplex(c, large);
-  const sign = decideSign(c, lead.constant);
-  if (sign === 'complex' || sign === 0) throw new Error('a large part without a sign');
   const found = comparable(c, lead);
   if ('element' in found) {
     const factor = isRational(lead.constant) && isRational(found.logarithm.constant) ? Q.divide(lead.constant, found.logarithm.constant) : c.field.divide(lead.constant, found.logarithm.constant);
@@ -261,6 +259,8 @@ function exponentialOfLarge(c: Context, large: Multi): Multi {
     noteSides(c, isEvenLead({ exponent: factor, coefficient: Q.ONE }, found.element));
     return multiply(c, monomial(c, found.element, factor), exponential(c, rest));
   }
+  const sign = decideSign(c, lead.constant);
+  if (sign === 'complex' || sign === 0) throw new Error('a large part without a sign');
   const element = insertExponential(c, sign === 1 ? large : negate(c, large), found.position);
   c.notes.sided = true;
   return monomial(c, element, Q.rational(-sign));

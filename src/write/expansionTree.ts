@@ -28,6 +28,11 @@ function powerOf(base: Expression, exponent: Expression, positive: boolean): Fac
 
 function negated(e: Expression): Expression {
   if (e.kind === 'number') return build.number(Q.negate(e.value));
+  // -(b - a) is a - b: a power that is a sum stays in the numerator, x^{a - b}.
+  if (e.kind === 'sum') {
+    const rank = (t: Expression): number => (t.kind === 'number' ? 2 : splitSign(t).negative ? 1 : 0);
+    return build.sum(...e.terms.map(negated).sort((x, y) => rank(x) - rank(y)));
+  }
   const { negative, magnitude } = splitSign(e);
   return negative ? magnitude : build.negation(e);
 }

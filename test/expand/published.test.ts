@@ -39,6 +39,7 @@ const infinite: readonly Row[] = [
   ['\\ln(x+\\ln x)', { at: 'inf', terms: 2 }, 'log(x) + log(x)/x', '2', 2],
   ['\\coth x - \\frac1x', { at: 'inf', terms: 3 }, '1 - 1/x + 2*exp(-2*x)', '0'],
   ['\\left(1+\\frac1x\\right)^x', { at: 'inf', terms: 3 }, 'exp(1)*(1 - 1/(2*x) + 11/(24*x^2))', '3'],
+  ['\\frac{\\Gamma(x+a)}{\\Gamma(x+b)}', { at: 'inf', terms: 2 }, 'x^(a-b) + (a-b)*(a+b-1)/2*x^(a-b-1)', '2 + b - a'], // DLMF 5.11.13, whatever the sign of a - b
   ['\\frac{e^{1/x} - 1}{1/x}', { at: 'inf', terms: 3 }, '1 + 1/(2*x) + 1/(6*x^2)', '3'],
 ];
 

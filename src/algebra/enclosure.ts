@@ -1,6 +1,7 @@
 /** Balls around elements, with the parameters at chosen rational values. A ball proves non-zero, never zero. */
 import type { Rational } from '../expression/index.ts';
 import type { FunctionDescription } from '../functions/description.ts';
+import { rootBall } from '../functions/index.ts';
 import { complex, type ComplexArithmetic, ELEMENTARY, type ElementaryName } from '../rigorous/index.ts';
 import type { Ball, ComplexBall } from '../rigorous/index.ts';
 import { exponentToRational, isWhole, type Exponent } from './exponent.ts';
@@ -70,6 +71,10 @@ export function createEvaluator(
         const angle = c.multiply(c.fromRational(shape.angle), c.constant('pi'));
         const cosine = c.cos(angle);
         return cosine ? c.add(cosine, cosine) : null;
+      }
+      case 'algebraic': {
+        const zero = rootBall(shape.coefficients, shape.index, precision, table.check);
+        return zero && c.multiply(c.fromInteger(shape.coefficients[0] ?? 1n), zero);
       }
       case 'apply':
         return null;

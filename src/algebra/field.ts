@@ -2,6 +2,7 @@
 import { Q, type Assumption, type Expression, type Rational } from '../expression/index.ts';
 import { describe as describeFunction, type FunctionDescription } from '../functions/index.ts';
 import type { Budget } from '../outcome.ts';
+import { zerosOfPolynomial } from './algebraicNumber.ts';
 import { createAssumptionStore } from './assumptions.ts';
 import { signOfCall } from './callSigns.ts';
 import { imaginaryKernel, kernelElement, minus, rationalOf, type Context } from './context.ts';
@@ -125,6 +126,8 @@ export function createField(assumptions: readonly Assumption[], budget: Budget, 
     log: (a) => logarithm(ctx, a),
     call: (id, args) => callFunction(ctx, id, args),
     zeros(coefficients) {
+      const rationals = coefficients.map(rationalOf);
+      if (rationals.every((q) => q !== null)) return zerosOfPolynomial(ctx, rationals);
       const [c0, c1, c2, c3] = coefficients;
       return coefficients.length === 4 && c0 && c1 && c2 && c3 ? zerosOfCubic(ctx, [c0, c1, c2, c3]) : null;
     },

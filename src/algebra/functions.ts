@@ -1,5 +1,6 @@
 /** Calls of the functions of mathematics: what the field knows itself, then what their descriptions say, else a kernel. */
 import { Declined } from '../outcome.ts';
+import { algebraicCall } from './algebraicNumber.ts';
 import type { Context } from './context.ts';
 import { ELEMENTARY_RULES, opaque } from './elementary.ts';
 import { elementKey, isQuotient, negateElement } from './quotient.ts';
@@ -23,6 +24,7 @@ function computeCall(ctx: Context, id: string, args: readonly Element[]): Elemen
   if (!first) throw new Declined('bad-request', `The function ${id} needs an argument.`);
   const own = ELEMENTARY_RULES[id];
   if (own) return own(ctx, [first, ...rest]);
+  if (id === 'polynomialRoot') return algebraicCall(ctx, args) ?? opaque(ctx, id, args);
   const description = ctx.describe(id);
   if (!description) return opaque(ctx, id, args);
   const trees = args.map((a) => toExpression(ctx, a));

@@ -21,6 +21,8 @@ export type KernelShape =
   | { readonly kind: 'abs'; readonly argument: Element }
   /** 2 cos(pi * angle) with 0 < angle < 1/2: an algebraic integer. */
   | { readonly kind: 'cosine'; readonly angle: Rational }
+  /** a_n times a zero of an irreducible polynomial of degree 3 or more: an algebraic integer. Coefficients highest first, index from 1 as in polynomialRoot. */
+  | { readonly kind: 'algebraic'; readonly coefficients: readonly bigint[]; readonly index: number }
   | { readonly kind: 'call'; readonly id: string; readonly args: readonly Element[] }
   /** An unspecified function or one of its derivatives: real for real arguments, free of relations. */
   | { readonly kind: 'apply'; readonly name: string; readonly derivatives: readonly number[]; readonly args: readonly Element[] };

@@ -1,5 +1,6 @@
 /** Signs as sets: what an element can be under the assumptions. All rules only widen, so that a single member is a proof. */
 import type { Rational } from '../expression/index.ts';
+import { signOfAlgebraic } from './algebraicSign.ts';
 import { compareExponents, isWhole, type Exponent } from './exponent.ts';
 import type { Kernel, KernelTable } from './kernel.ts';
 import type { Monomial } from './monomial.ts';
@@ -18,6 +19,7 @@ export const ANY = REAL | NOT_REAL;
 
 export const isPositive = (s: SignSet): boolean => s === POSITIVE;
 export const isNonNegative = (s: SignSet): boolean => (s & ~(POSITIVE | NIL)) === 0;
+const signSetOf = (sign: 1 | -1 | 'complex'): SignSet => (sign === 1 ? POSITIVE : sign === -1 ? NEGATIVE : NOT_REAL);
 export const isRealSet = (s: SignSet): boolean => (s & NOT_REAL) === 0;
 export const isNonZero = (s: SignSet): boolean => (s & NIL) === 0 && isRealSet(s);
 
@@ -139,6 +141,8 @@ export function createSignRules(table: KernelTable, facts: SignFacts, decide: (k
       case 'integer':
       case 'cosine':
         return POSITIVE;
+      case 'algebraic':
+        return signSetOf(signOfAlgebraic(k.shape));
       case 'imaginary':
         return NOT_REAL;
       case 'radicand': {

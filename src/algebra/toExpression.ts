@@ -1,5 +1,6 @@
 /** Elements as a person writes them: numbers in front, powers of one base together, radicals joined, sums in natural order. */
 import { build, Q, walk, type Expression, type Rational } from '../expression/index.ts';
+import { withNumbersWritten } from './algebraicWriting.ts';
 import { constantKernel, kernelElement, rationalOf, type Context } from './context.ts';
 import { exponentToRational, numeratorOf, denominatorOf, type Exponent } from './exponent.ts';
 import { linearFactors } from './linearFactors.ts';
@@ -30,6 +31,8 @@ const RANK = { imaginary: 0, radical: 1, constant: 2, parameter: 3, sum: 4, func
 export function toExpression(ctx: Context, element: Element): Expression {
   const a = withJoinedLogarithms(ctx, element);
   if (!isQuotient(a)) return numberExpression(a);
+  const written = withNumbersWritten(ctx, a);
+  if (written) return toExpression(ctx, written);
   const cosines = inCosines(ctx, a);
   if (cosines) return cosines;
   const { content, monomial, numerator, denominator } = a;
@@ -479,6 +482,8 @@ function kernelExpression(ctx: Context, k: Kernel): Expression {
       return { kind: 'apply', name: shape.name, args: shape.args.map((x) => toExpression(ctx, x)), derivatives: shape.derivatives };
     case 'cosine':
       return build.product(build.number(2), build.call('cos', build.quotient(Q.isOne({ num: shape.angle.num, den: 1n }) ? build.constant('pi') : build.product(build.number(shape.angle.num), build.constant('pi')), build.number(shape.angle.den))));
+    case 'algebraic':
+      return build.product(build.number(shape.coefficients[0] ?? 1n), build.call('polynomialRoot', build.number(shape.index), ...shape.coefficients.map((x) => build.number(x))));
     case 'parameter':
       return build.symbol(shape.name);
     case 'constant':

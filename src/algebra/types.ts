@@ -50,10 +50,10 @@ export interface Field {
   /** f(args) for any function of the registry: special values and identities where known, else a kernel. */
   call(id: string, args: readonly Element[]): Element;
   /**
-   * All zeros of a polynomial with rational coefficients (lowest first) and no rational zero, real ones first, where real radicals write them: cubics with one real zero.
-   * Null where that is not so.
+   * All zeros of an irreducible polynomial of degree 3 to 24 with rational coefficients (lowest first), real ones first: by real radicals or cosines where cubics have them, else as numbers of their own. Of cubics with parameters or radicals in them where their discriminant is known to leave one real zero.
+   * Null for any other polynomial; `rationalFactors` takes it apart.
    */
-  zeros(coefficients: readonly Rational[]): readonly { readonly value: Element; readonly real: boolean }[] | null;
+  zeros(coefficients: readonly Element[]): readonly { readonly value: Element; readonly real: boolean }[] | null;
   isZero(a: Element): Truth;
   /** Sign under the assumptions; 'complex' if provably not real. */
   sign(a: Element): Sign;

@@ -2,6 +2,7 @@
 import { Q, type Rational } from '../expression/index.ts';
 import type { FunctionDescription } from '../functions/description.ts';
 import { complex, real, type ComplexBall } from '../rigorous/index.ts';
+import { isRealAlgebraicShape } from './algebraicSign.ts';
 import type { AssumptionStore } from './assumptions.ts';
 import { createEvaluator, type Evaluator } from './enclosure.ts';
 import type { Kernel, KernelTable } from './kernel.ts';
@@ -52,7 +53,7 @@ export function createZeroTest(table: KernelTable, describe: (id: string) => Fun
         if (a.monomial.kernels.every((k) => neverIdenticallyZero(table.kernels[k] as Kernel))) return 'no';
       } else {
         const kernels = [...kernelsOf(a)].map((k) => table.kernels[k] as Kernel);
-        if (kernels.every(isIndependent) && a.monomial.kernels.every((k) => neverIdenticallyZero(table.kernels[k] as Kernel))) return 'no';
+        if (isIndependentSet(kernels) && a.monomial.kernels.every((k) => neverIdenticallyZero(table.kernels[k] as Kernel))) return 'no';
       }
       const key = elementKey(a);
       const known = answers.get(key);
@@ -91,6 +92,17 @@ export function createZeroTest(table: KernelTable, describe: (id: string) => Fun
 /** Parameters, pi, radicals of integers and i are algebraically independent but for their relations, which the normal form applies. */
 const isIndependent = (k: Kernel): boolean =>
   k.shape.kind === 'parameter' || k.shape.kind === 'integer' || k.shape.kind === 'imaginary' || k.shape.kind === 'apply' || (k.shape.kind === 'constant' && k.shape.name === 'pi');
+
+/** One algebraic number beside them is reduced by its minimal polynomial; with i only a real one, and with radicals none, for the field may hold them already. */
+function isIndependentSet(kernels: readonly Kernel[]): boolean {
+  const numbers = kernels.filter((k) => k.shape.kind === 'algebraic');
+  const others = kernels.filter((k) => k.shape.kind !== 'algebraic');
+  if (!others.every(isIndependent)) return false;
+  const [only] = numbers;
+  if (!only || only.shape.kind !== 'algebraic') return true;
+  const inImaginary = others.some((k) => k.shape.kind === 'imaginary');
+  return numbers.length === 1 && !others.some((k) => k.shape.kind === 'integer') && !(inImaginary && !isRealAlgebraicShape(only.shape));
+}
 
 /** A value of the parameter that its own assumptions allow; different for every name and sample. */
 function sampleOf(facts: AssumptionStore, name: string, sample: number): Rational | { readonly re: Rational; readonly im: Rational } {

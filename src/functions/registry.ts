@@ -1,5 +1,6 @@
 /** All descriptions, and the ways to find one by its names. */
 import { build, type Expression } from '../expression/index.ts';
+import { algebraicFunctions } from './algebraic/index.ts';
 import { besselFunctions } from './bessel/index.ts';
 import type { FunctionDescription } from './description.ts';
 import { elementaryFunctions } from './elementary/index.ts';
@@ -13,6 +14,7 @@ import { zetaFunctions } from './zeta/index.ts';
 
 const ALL: readonly FunctionDescription[] = [
   ...elementaryFunctions,
+  ...algebraicFunctions,
   ...gammaFunctions,
   ...integralFunctions,
   ...besselFunctions,

@@ -1,5 +1,5 @@
 /** Expansion -> text: typeset, as one line of Unicode, and for a numeric check. */
-import { build, PLAIN_STYLE, Q, type DocumentStyle, type Expression } from '../expression/index.ts';
+import { build, mapChildren, PLAIN_STYLE, Q, sameExpression, type DocumentStyle, type Expression } from '../expression/index.ts';
 import type { Expansion } from '../expand/expansion.ts';
 import type { NumericAnswer } from '../protocol.ts';
 import { envelope } from './envelope.ts';
@@ -10,7 +10,7 @@ import { toUnicode } from './unicode.ts';
 
 /** The whole expansion in the style of a document: terms, then O-term, dots or nothing as the style says. */
 export function expansionLatex(expansion: Expansion, style: DocumentStyle = PLAIN_STYLE): string {
-  return toLatex(expansionTree(expansion, style.ending, style.coefficient), style);
+  return toLatex(withNames(expansion, expansionTree(expansion, style.ending, style.coefficient)), style);
 }
 
 /** What stands after the function: `= x - \frac{x^3}{6} + O(x^5)`, `\approx x - \frac{x^3}{6}` where the document prints no remainder. */
@@ -26,7 +26,14 @@ export function equationLatex(expansion: Expansion, style: DocumentStyle = PLAIN
 
 /** One line of Unicode with the O-term. */
 export function expansionText(expansion: Expansion): string {
-  return toUnicode(expansionTree(expansion));
+  return toUnicode(withNames(expansion, expansionTree(expansion)));
+}
+
+/** The tree with the names that the expansion gives to numbers. */
+function withNames({ names }: Expansion, tree: Expression): Expression {
+  if (!names) return tree;
+  const visit = (e: Expression): Expression => names.find((n) => sameExpression(n.value, e))?.symbol ?? mapChildren(e, visit);
+  return visit(tree);
 }
 
 /** The O-term alone, typeset; with a prefactor the O-term is the one inside it. Empty for an exact sum. */

@@ -134,9 +134,14 @@ describe('zeros of cubics', () => {
       expect(f.compare(real, Q.add(value, Q.rational(1, 100000000)))).toBe(-1);
     }
   });
-  it('are not written where three are real', () => {
-    // x^3 - 3x + 1: casus irreducibilis.
-    expect(fieldOf().zeros([1, -3, 0, 1].map((c) => Q.rational(c)))).toBeNull();
+  it('are real radicals in a parameter whose sign leaves one real zero, and not written otherwise', () => {
+    const f = fieldOf(positive('a'));
+    const [c0, c1, c2, c3] = [Q.ONE, f.fromExpression(s('a')), Q.ZERO, Q.ONE];
+    const zeros = f.zeros([c0, c1, c2, c3]) ?? [];
+    expect(zeros.map((z) => z.real)).toEqual([true, false, false]);
+    for (const { value } of zeros.slice(0, 1)) expect(f.isZero(f.add(f.add(f.power(value, Q.rational(3)), f.multiply(c1, value)), Q.ONE))).toBe('yes');
+    const open = fieldOf();
+    expect(open.zeros([Q.ONE, open.fromExpression(s('a')), Q.ZERO, Q.ONE])).toBeNull();
   });
 });
 

@@ -9,6 +9,7 @@ import { type Direction, openSide } from '../open-side.ts';
 import { type SideResult, takeTerms } from '../side.ts';
 import { startsOf } from './branches.ts';
 import type { Start } from './start.ts';
+import { withRootsNamed } from './named-roots.ts';
 import { refine } from './newton.ts';
 import { openCurve } from './taylor.ts';
 
@@ -110,7 +111,7 @@ function quietly(compare: () => -1 | 0 | 1 | 'complex'): number {
 
 function join(problem: RootProblem, direction: Direction | 'both', sides: readonly SideResult[], assumptions: readonly string[] = []): Expansion {
   const whole: ExpansionProblem = { ...problem, function: problem.unknown };
-  const all = sides.map((s) => assemble(whole, direction, s, assumptions));
+  const all = withRootsNamed(sides.map((s) => assemble(whole, direction, s, assumptions)), problem.equation, problem.unknown);
   const [first] = all;
   if (!first) throw new Declined('no-expansion', 'No real root was found near the point; name the value that the root tends to.');
   return all.length > 1 ? { ...first, branches: all } : first;

@@ -1,4 +1,5 @@
-/** Exact zeros of a polynomial with constant coefficients, where they can be written by rationals and radicals. */
+/** Exact zeros of a polynomial with constant coefficients, by rationals and radicals, or as algebraic numbers where they are rational polynomials' zeros. */
+import { rationalFactors } from '../../algebra/index.ts';
 import type { Element } from '../../algebra/types.ts';
 import { Q, type Rational } from '../../expression/index.ts';
 import { Declined } from '../../outcome.ts';
@@ -30,7 +31,18 @@ export function zerosOf(c: Context, polynomial: readonly Element[], complex: boo
   }
   if (p.length <= 1) return zeros;
   if (!complex && !isRadical(c, p) && p.every(isRational) && countRealZeros(p as Rational[]) === 0) return zeros;
-  return [...zeros, ...radicalZeros(c, p)];
+  return [...zeros, ...remainingZeros(c, p)];
+}
+
+/** By the irreducible factors over the rationals, where the coefficients are rational. */
+function remainingZeros(c: Context, p: readonly Element[]): Zero[] {
+  const factors = p.length > 3 && p.every(isRational) && !isRadical(c, p) ? rationalFactors(p as Rational[], () => c.budget.check()) : null;
+  if (!factors) return radicalZeros(c, p);
+  return factors.flatMap((f) => {
+    const own = f.polynomial.map((a) => Q.rational(a));
+    const numbers = isRadical(c, own) || own.length < 4 ? null : c.field.zeros(own);
+    return numbers ? numbers.map((z) => ({ ...z, multiplicity: f.multiplicity })) : radicalZeros(c, own).map((z) => ({ ...z, multiplicity: z.multiplicity * f.multiplicity }));
+  });
 }
 
 /** a + b z^g or a + b z^g + c z^(2g). */
@@ -113,7 +125,7 @@ function divisors(n: bigint): bigint[] {
   return found;
 }
 
-/** a + b z^g, a quadratic in z^g, or a cubic whose radicals are real. */
+/** a + b z^g, or a quadratic in z^g. */
 function radicalZeros(c: Context, p: readonly Element[]): Zero[] {
   const present = p.flatMap((a, k) => (isZero(c, a) ? [] : [k]));
   const step = present.reduce((g, k) => Number(Q.gcd(BigInt(g), BigInt(k))), 0);
@@ -128,9 +140,11 @@ function radicalZeros(c: Context, p: readonly Element[]): Zero[] {
     const root = f.power(discriminant, Q.HALF);
     return [...rootsOf(c, f.subtract(half, root), step, 1), ...rootsOf(c, f.add(half, root), step, 1)];
   }
-  const radicals = reduced.every(isRational) ? f.zeros(reduced as Rational[]) : null;
-  if (radicals) return radicals.flatMap((z) => rootsOf(c, z.value, step, 1));
-  throw new Declined('no-expansion', 'The leading coefficients of the roots solve an equation of degree three or more that has no rational root and is not solved by real radicals; name the value of the root.');
+  if (reduced.length === 4) {
+    const numbers = f.zeros(reduced);
+    if (numbers) return numbers.flatMap((z) => rootsOf(c, z.value, step, 1));
+  }
+  throw new Declined('no-expansion', 'The leading coefficients of the roots solve an equation of degree three or more with parameters or radicals in its coefficients; give the parameters values, assume signs under which a cubic has one real root (a > 0 in x^3 + a x + 1), or name the value of the root.');
 }
 
 /** All n-th roots of a value other than zero: the real ones first, the others by powers of exp(2 pi i/n). */

@@ -8,24 +8,31 @@ export interface BatchStreams {
   readonly output: NodeJS.WritableStream;
 }
 
-/** Requests are spread over the engines given; answers are written in the order asked, each as soon as all before it are out. */
+/** Requests are spread over the engines given; answers are written in the order asked, each as soon as it and all before it are there, whether or not more input comes. */
 export async function batch(engines: readonly EngineClient[], { input, output }: BatchStreams): Promise<void> {
   const lines = createInterface({ input, crlfDelay: Infinity });
   const window = engines.length * 4;
-  const pending: Promise<Answer>[] = [];
+  const pending: Promise<void>[] = [];
+  let last: Promise<void> = Promise.resolve();
   let next = 0;
-  const writeOldest = async (): Promise<void> => {
-    const answer = await pending.shift();
+  const write = async (answer: Answer): Promise<void> => {
     if (!output.write(`${JSON.stringify(answer)}\n`)) await new Promise<void>((resolve) => output.once('drain', () => resolve()));
+  };
+  const writeAfter = async (before: Promise<void>, answer: Promise<Answer>): Promise<void> => {
+    await before;
+    await write(await answer);
   };
   for await (const line of lines) {
     if (line.trim() === '') continue;
     const engine = engines[next % engines.length];
     next += 1;
-    if (engine) pending.push(answerLine(engine, line));
-    while (pending.length >= window) await writeOldest();
+    if (!engine) continue;
+    last = writeAfter(last, answerLine(engine, line));
+    pending.push(last);
+    // No more requests are taken in than the engines can hold; what is read later waits in the pipe.
+    if (pending.length >= window) await pending.shift();
   }
-  while (pending.length > 0) await writeOldest();
+  await last;
 }
 
 async function answerLine(engine: EngineClient, line: string): Promise<Answer> {

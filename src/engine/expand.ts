@@ -1,5 +1,5 @@
 /** `expand`: text -> expansion, bound, terms needed, and the details asked for. */
-import { type Expression, type Rational, structureKey } from '../expression/index.ts';
+import { dependsOn, type Expression, freeSymbols, type Rational, structureKey } from '../expression/index.ts';
 import { expand, expandRoot, expandSmall, isScalarFormula, type Expansion, type ExpansionProblem } from '../expand/index.ts';
 import { type Budget, failure, type Outcome, success } from '../outcome.ts';
 import type { ExpandAnswer, ExpandRequest, Failure } from '../protocol.ts';
@@ -85,6 +85,8 @@ function rootOf(request: ExpandRequest, source: SourceFormula, run: Run, time: B
   if (near && !near.ok) return near;
   const assumptions = readAllAssumptions(request.assume);
   if (!assumptions.ok) return assumptions;
+  const isSystem = source.conditions.some((c) => c.kind === 'relation' && c.relations.includes('=') && freeSymbols(unknown.value).some((n) => dependsOn(c, n)));
+  if (isSystem) return failure('bad-request', 'More than one equation for the unknown stands here, and systems are not solved; eliminate the other unknowns and give one equation.');
   const problem = { equation, unknown: unknown.value, ...variable.value, side: request.side ?? 'both', assumptions: assumptions.value, complex: request.complex ?? false, ...(near ? { near: near.value } : {}) };
   return run((size) => expandRoot({ ...problem, ...size }, time));
 }

@@ -1,6 +1,6 @@
 /** Where the roots start: their leading terms, each simple enough for Newton's iteration to go on. */
 import type { Element } from '../../algebra/types.ts';
-import { build, Q } from '../../expression/index.ts';
+import { build, dependsOn, type Expression, Q, substitute, walk } from '../../expression/index.ts';
 import { Declined } from '../../outcome.ts';
 import { add, compareMonomials, growth, isZero, type Monomial, monomialOf, monomialSeries, type Multi, multiplyMonomials, scaleBy, Series, unitMonomial } from '../../series/index.ts';
 import { evaluate } from '../evaluate.ts';
@@ -27,7 +27,9 @@ export function startsOf(curve: Curve, near: Element | 1 | -1 | null, complex: b
   if (atZero?.complete) return explore(curve, Q.ZERO, atZero.coefficients, null, complex, 0);
   const limits = finiteLimits(curve);
   const finite = limits.flatMap((y) => atLimit(curve, y, complex));
-  const found = [...finite, ...infiniteStarts(curve)];
+  const toZero = finite.some((s) => growth(c, s.value) === 'small');
+  // Roots that tend to 0 are ends of the real line to `infiniteStarts` too.
+  const found = [...finite, ...infiniteStarts(curve).filter((s) => !toZero || growth(c, s.value) !== 'small')];
   return found.length > 0 ? found : explicitStart(curve);
 }
 
@@ -104,6 +106,32 @@ function explore(curve: Curve, base: Multi, coefficients: readonly Multi[], boun
 
 const vanishes = (curve: Curve, a: Multi): boolean => (a instanceof Series ? monomialOf(curve.side.context, a) === null : isZero(curve.side.context, a));
 
+/** Functions that take each value once on the real line, or nowhere. */
+const ONE_TO_ONE = new Set(['exp', 'log', 'sinh', 'tanh', 'expm1', 'log1p']);
+
+/** The real solution of an equation for constants in which the unknown occurs once, under functions that are one to one. */
+function onlySolution(curve: Curve, limit: Expression): Element | null {
+  const { field } = curve.side.context;
+  let occurrences = 0;
+  for (const node of walk(limit)) {
+    if (node.kind === 'symbol' && node.name === curve.unknown) occurrences += 1;
+    if (!dependsOn(node, curve.unknown)) continue;
+    if (node.kind === 'call' && !ONE_TO_ONE.has(node.function)) return null;
+    if (node.kind === 'power' && dependsOn(node.base, curve.unknown) && !(node.exponent.kind === 'number' && node.exponent.value.num % 2n !== 0n)) return null;
+    if (node.kind === 'root' && !(node.degree.kind === 'number' && node.degree.value.den === 1n)) return null;
+  }
+  const tree = occurrences === 1 ? solveFor(limit, curve.unknown, build.number(0)) : null;
+  if (!tree) return null;
+  try {
+    const value = field.fromExpression(tree);
+    const check = field.isZero(field.fromExpression(substitute(limit, curve.unknown, field.toExpression(value))));
+    return check === 'yes' && field.isReal(value) === 'yes' ? value : null;
+  } catch (error) {
+    if (error instanceof Declined && error.failure.code !== 'over-budget') return null;
+    throw error;
+  }
+}
+
 /** Finite values that roots can tend to: zeros of the leading coefficient of F at fixed y, where that is a polynomial; else 0 alone, if it is one. */
 function finiteLimits(curve: Curve): Element[] {
   const { context: c, session } = curve.side;
@@ -113,6 +141,10 @@ function finiteLimits(curve: Curve): Element[] {
   if (!c.field.parameters(lead.constant).includes(curve.unknown)) return [];
   const limit = c.field.toExpression(lead.constant);
   const inner = tryTaylor({ ...curve, tree: limit }, Q.ZERO);
+  if (!inner?.complete) {
+    const value = onlySolution(curve, limit);
+    if (value) return [value];
+  }
   if (!inner) return [];
   const constants = inner.coefficients.map((a) => (a instanceof Series ? Q.ZERO : a));
   const zero: Element[] = constants[0] !== undefined && isZero(c, constants[0]) ? [Q.ZERO] : [];

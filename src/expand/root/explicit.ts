@@ -37,6 +37,8 @@ export function solveFor(e: Expression, unknown: string, value: Expression): Exp
       const inverse = e.exponent.kind === 'number' && !Q.isZero(e.exponent.value) ? build.number(Q.reciprocal(e.exponent.value)) : build.quotient(build.number(1), e.exponent);
       return solveFor(e.base, unknown, build.power(value, inverse));
     }
+    case 'root':
+      return dependsOn(e.degree, unknown) ? null : solveFor(e.radicand, unknown, build.power(value, e.degree));
     case 'call': {
       const [a] = e.args;
       const inverse = INVERSE[e.function];

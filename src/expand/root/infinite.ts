@@ -12,9 +12,12 @@ import { type Curve, separate } from './taylor.ts';
 
 /** One start for each end of the real line, and each side of 0, where A grows like B. */
 export function infiniteStarts(curve: Curve): Start[] {
-  const parts = separate(curve);
-  if (!parts) return [];
+  const written = separate(curve);
+  if (!written) return [];
   const { context: c, session } = curve.side;
+  const shrinks = growth(c, evaluate(session, written.right)) === 'small';
+  // A small A = B is a large 1/A = 1/B.
+  const parts = shrinks ? { left: build.power(written.left, -1), right: build.power(written.right, -1) } : written;
   const goal = evaluate(session, parts.right);
   if (growth(c, goal) !== 'large') return [];
   const starts: Start[] = [];

@@ -46,7 +46,7 @@ export function taylorAt(curve: Curve, base: Multi, most: number): Taylor {
   }
 }
 
-/** A(y) and B(t) with F = A - B; null where unknown and variable are mixed. */
+/** A(y) and B(t) with A = B where F = 0: F = A - B, or F = A1 B1 - A2 B2; null where unknown and variable are mixed otherwise. */
 export function separate(curve: Curve): { readonly left: Expression; readonly right: Expression } | null {
   const terms: Expression[] = [];
   const visit = (e: Expression, negative: boolean): void => {
@@ -57,6 +57,30 @@ export function separate(curve: Curve): { readonly left: Expression; readonly ri
   visit(curve.tree, false);
   const symbol = curve.side.context.local;
   const mixed = terms.some((t) => dependsOn(t, curve.unknown) && dependsOn(t, symbol));
-  if (mixed) return null;
+  if (mixed) return terms.length === 2 ? separatedQuotient(curve, terms) : null;
   return { left: build.sum(...terms.filter((t) => dependsOn(t, curve.unknown))), right: build.sum(...terms.filter((t) => !dependsOn(t, curve.unknown)).map(build.negation)) };
+}
+
+/** a(y) b(t) + c(y) d(t) = 0 as a/c = -d/b. */
+function separatedQuotient(curve: Curve, terms: readonly Expression[]): { readonly left: Expression; readonly right: Expression } | null {
+  const symbol = curve.side.context.local;
+  const split = (e: Expression): { readonly own: Expression[]; readonly other: Expression[] } | null => {
+    if (e.kind === 'product' || e.kind === 'negation') {
+      const parts = (e.kind === 'product' ? e.factors : [build.number(-1), e.operand]).map(split);
+      return parts.every((p) => p !== null) ? { own: parts.flatMap((p) => p.own), other: parts.flatMap((p) => p.other) } : null;
+    }
+    if (e.kind === 'quotient') {
+      const [above, below] = [split(e.numerator), split(e.denominator)];
+      const inverse = (list: readonly Expression[]): Expression[] => list.map((x) => build.power(x, -1));
+      return above && below ? { own: [...above.own, ...inverse(below.own)], other: [...above.other, ...inverse(below.other)] } : null;
+    }
+    if (!dependsOn(e, curve.unknown)) return { own: [], other: [e] };
+    return dependsOn(e, symbol) ? null : { own: [e], other: [] };
+  };
+  const [first, second] = terms.map(split);
+  if (!first || !second) return null;
+  return {
+    left: build.product(...first.own, ...second.own.map((x) => build.power(x, -1))),
+    right: build.product(build.number(-1), ...second.other, ...first.other.map((x) => build.power(x, -1))),
+  };
 }

@@ -89,6 +89,8 @@ describe('enclosures contain the truth', () => {
     expect(at('digamma', '-21/10', '-19/10')).toBeNull();
     expect(at('zeta', '9/10', '11/10')).toBeNull();
     expect(at('besselK', '-1', '1', '0')).toBeNull();
+    expect(at('besselK', '0', '0', '0')).toBeNull();
+    expect(at('besselY', '0', '0', '2')).toBeNull();
     expect(at('ellipticKParameter', '9/10', '11/10')).toBeNull();
     expect(at('lambertW', '-1/2', '0', '0')).toBeNull();
     expect(at('expIntegralEi', '-1', '1')).toBeNull();

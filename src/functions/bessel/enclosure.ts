@@ -135,11 +135,13 @@ function integerSecondKind<T>(kit: Kit<T>, n: number, z: T, kind: 'Y' | 'K'): T 
   const quarter = a.square(half);
   const w = kind === 'Y' ? a.negate(quarter) : quarter;
   const logarithm = a.log(half);
+  // At z = 0, where the sum below would never see its terms grow small against it.
+  if (logarithm === null) return null;
   const own = firstKind(kit, q(n), z, kind === 'Y' ? -1 : 1);
   const harmonic = harmonicSum(kit, n, w);
   const up = a.powerInteger(half, n);
   const down = a.powerInteger(half, -n);
-  if (logarithm === null || own === null || harmonic === null || up === null || down === null) return null;
+  if (own === null || harmonic === null || up === null || down === null) return null;
   const finite = n === 0 ? a.zero : a.multiply(down, finiteSum(kit, n, a.negate(w)));
   const lead = a.multiply(a.add(logarithm, kit.fromReal(real.eulerGamma(kit.precision))), own);
   const tail = a.multiply(up, harmonic);

@@ -1,9 +1,9 @@
 /** A function by its description: local form at singular places and infinity, differential equation or derivative at regular points. */
 import type { Element } from '../algebra/types.ts';
 import { build, type CallNode, type Expression, Q, type Rational, walk } from '../expression/index.ts';
-import { acceptsArity, describe, type FormalSeries, type FunctionDescription, type LocalForm, type Place } from '../functions/index.ts';
+import { acceptsArity, describe, type FormalSeries, type FunctionDescription, type LocalForm, type Place, type Together } from '../functions/index.ts';
 import { Declined } from '../outcome.ts';
-import { add, alongDerivative, beyondAllOrders, compose, type Context, eventualSign, exactOf, finiteStream, growth, isRational, isRealMulti, leading, monomial, type Multi, multiply, plainText, scaleBy, Series, signOfExponent, split, withExact } from '../series/index.ts';
+import { add, alongDerivative, beyondAllOrders, compose, type Context, decideSign, divide, eventualSign, exactOf, finiteStream, growth, isRational, isRealMulti, leading, monomial, type Multi, multiply, plainText, scaleBy, Series, signOfExponent, split, subtract, withExact } from '../series/index.ts';
 import { bind, type Evaluate, freshSymbol, type Session } from './session.ts';
 import { aroundSlowPart } from './slow-part.ts';
 import { taylorFromEquation } from './equation.ts';
@@ -14,6 +14,8 @@ export function evaluateDescribed(s: Session, d: FunctionDescription, args: read
   const argument = args[index];
   if (index < 0) return c.field.call(d.id, args as readonly Element[]);
   if (!(argument instanceof Series) || args.some((a, k) => k !== index && a instanceof Series)) {
+    const value = d.together ? inBothArguments(s, d, args, evaluate) : null;
+    if (value) return value;
     throw new Declined('no-expansion', `${title(d)} is expanded in one of its arguments at a time; keep the others constant.`);
   }
   const key = `${d.id}:${args.map((a, k) => (k === index ? '*' : c.field.key(a as Element))).join(',')}`;
@@ -25,6 +27,34 @@ export function evaluateDescribed(s: Session, d: FunctionDescription, args: read
   const value = named(c, inOneArgument(s, d, args, index, argument, evaluate, remember), () => build.call(d.id, ...args.map((a) => exactOf(c, a))));
   remember(value);
   return value;
+}
+
+/** Both arguments grow: by their constant difference or ratio. Null where neither is constant. */
+function inBothArguments(s: Session, d: FunctionDescription, args: readonly Multi[], evaluate: Evaluate): Multi | null {
+  const c = s.context;
+  const [first, second] = args;
+  if (!(first instanceof Series) || !second || !isRealMulti(c, first) || growth(c, first) !== 'large' || eventualSign(c, first) !== 1) return null;
+  const relation = relationOf(c, first, second);
+  if (!relation) return null;
+  const z = freshSymbol(s, 'z');
+  const form = d.together?.(relation, build.symbol(z));
+  if (!form && relation.kind === 'ratio' && relation.size === 'unknown') throw new Declined('needs-assumption', `The answer depends on whether ${plainText(relation.value)} lies below or above 1; assume which.`);
+  if (!form) return null;
+  const value = evaluateForm(bind(s, [[z, first]]), form, evaluate);
+  return named(c, form.subdominantDropped ? multiply(c, value, add(c, Q.ONE, beyondAllOrders(c, first))) : value, () => build.call(d.id, ...args.map((a) => exactOf(c, a))));
+}
+
+function relationOf(c: Context, first: Multi, second: Multi): Together | null {
+  const constant = (m: Multi): Element | null => {
+    const parts = split(c, m);
+    return parts.large || (parts.small instanceof Series && leading(c, parts.small) !== null) ? null : parts.constant;
+  };
+  const difference = constant(subtract(c, second, first));
+  if (difference !== null) return { kind: 'difference', value: exactOf(c, difference) };
+  const ratio = constant(divide(c, second, first));
+  if (ratio === null || decideSign(c, ratio) !== 1) return null;
+  const size = c.field.compare(ratio, Q.ONE);
+  return { kind: 'ratio', value: exactOf(c, ratio), size: size === -1 ? 'below' : size === 1 ? 'above' : 'unknown' };
 }
 
 /** Gives a result its tree; where it is one power of a scale element, the coefficient too, so that it can cancel exactly. */

@@ -34,6 +34,9 @@ export type Place =
   /** The argument grows without bound; direction 1 or -1 on the real line, or a complex phase as an exact expression. */
   | { readonly kind: 'infinite'; readonly argument: Expression; readonly direction: 1 | -1 | Expression };
 
+/** How the second of two arguments that grow together stands to the first, positive one: by a constant difference, or by a constant positive ratio, which may be known to lie below or above 1. */
+export type Together = { readonly kind: 'difference'; readonly value: Expression } | { readonly kind: 'ratio'; readonly value: Expression; readonly size: 'below' | 'above' | 'unknown' };
+
 /** sum over k >= 0 of coefficient(k) * argument^k, argument -> 0. Coefficients are exact. */
 export interface FormalSeries {
   readonly argument: Expression;
@@ -72,6 +75,8 @@ export interface FunctionDescription {
   readonly parity?: 'even' | 'odd';
   /** Behaviour when argument `index` approaches a place where the function is not analytic, or where a better stream of coefficients than repeated differentiation is known. Null: regular there (use derivative or equation) or unknown. */
   readonly local?: (args: readonly Expression[], index: number, place: Place) => LocalForm | null;
+  /** Behaviour where both arguments of a function of two grow together; `first` is the first of them. Null: unknown. */
+  readonly together?: (relation: Together, first: Expression) => LocalForm | null;
   /**
    * Linear differential equation in the varying argument z: sum over j of p_j(z) f^(j)(z) = 0, p_j as polynomials with exact coefficients, lowest power first.
    * Gives Taylor coefficients at any regular point from the values of f, f', ... there.

@@ -3,6 +3,7 @@ import { type Expression, Q, type Rational } from '../../expression/index.ts';
 import { argument, bigO, call, cos, euler, exp, gamma, half, imaginary, lift, log, minus, neg, over, pi, plus, pow, q, scaled, sin, sqrt, square, times } from '../compose.ts';
 import type { FormalSeries, FunctionDescription, LocalForm, Place } from '../description.ts';
 import { asInteger, asRational } from '../exactForms.ts';
+import { stirlingSeries } from '../gamma/gamma.ts';
 import { F1, F2, F3, form, hypergeometricSeries, isAt, ratioSeries, series, terminationLength } from '../formal.ts';
 import { factorial, harmonicNumber } from '../sequences.ts';
 
@@ -145,9 +146,11 @@ function largeOrder(kind: Kind, x: Expression, place: Place): LocalForm | null {
     term = over(times(term, z), times(k + 1, upper ? plus(nu, k + 1) : minus(k + 1, nu)));
   }
   const sum = plus(...terms, bigO(pow(nu, -LARGE_ORDER_TERMS)));
-  if (upper) return form(times(over(pow(times(half, x), nu), gamma(plus(nu, 1))), sum), [], 'DLMF 10.2.2, 10.25.2, 10.19.1');
-  const lead = times(gamma(nu), pow(times(half, x), neg(nu)));
-  return form(times(kind === 'K' ? half : neg(over(1, pi)), lead, sum), [], 'DLMF 10.2.3, 10.27.4, 10.19.2', { subdominantDropped: true });
+  // Gamma(nu) by Stirling's formula in one exponent with (x/2)^nu: beside nu log nu the sign of log(x/2) does not matter.
+  const exponent = minus(times(nu, log(times(half, x))), minus(times(nu, log(nu)), nu));
+  if (upper) return form(times(over(exp(exponent), sqrt(times(2, pi, nu))), exp(neg(F1)), sum), [stirlingSeries(nu)], 'DLMF 10.2.2, 10.25.2, 10.19.1, 5.11.1');
+  const lead = times(sqrt(over(times(2, pi), nu)), exp(neg(exponent)), exp(F1));
+  return form(times(kind === 'K' ? half : neg(over(1, pi)), lead, sum), [stirlingSeries(nu)], 'DLMF 10.2.3, 10.27.4, 10.19.2', { subdominantDropped: true });
 }
 
 function cylinderLocal(kind: Kind): NonNullable<FunctionDescription['local']> {

@@ -6,6 +6,7 @@ import { besselILocal, besselJLocal, besselKLocal, besselYLocal, cylinderDerivat
 import { enclosed } from '../enclosure/wrap.ts';
 import { airyKelvinAlgorithms } from './airyKelvinEnclosure.ts';
 import { besselAlgorithms } from './enclosure.ts';
+import { besselITogether, besselJTogether, besselKTogether, besselYTogether } from './largeOrder.ts';
 import { kelvinDerivative, kelvinEquation, kelvinLocal, kelvinValue } from './kelvin.ts';
 import { besselNames as n } from './names.ts';
 import { struveDerivative, struveEquation, struveLocal } from './struve.ts';
@@ -18,10 +19,10 @@ const spherical =
     product(squareRoot(quotient(constant('pi'), product(number(2), x))), call(id, sum(order, half), x));
 
 const descriptions: readonly FunctionDescription[] = [
-  { id: 'besselJ', title: 'Bessel function of the first kind', arity: 2, names: n.besselJ, local: besselJLocal, value: cylinderValue('J'), derivative: cylinderDerivative('besselJ', 1), equation: cylinderEquation('besselJ', 1), source: 'DLMF 10.2.2' },
-  { id: 'besselY', title: 'Bessel function of the second kind', arity: 2, names: n.besselY, local: besselYLocal, value: cylinderValue('Y'), derivative: cylinderDerivative('besselY', 1), equation: cylinderEquation('besselY', 1), domain: 'x > 0', source: 'DLMF 10.2.3' },
-  { id: 'besselI', title: 'modified Bessel function of the first kind', arity: 2, names: n.besselI, local: besselILocal, value: cylinderValue('I'), derivative: cylinderDerivative('besselI', 1), equation: cylinderEquation('besselI', -1), source: 'DLMF 10.25.2' },
-  { id: 'besselK', title: 'modified Bessel function of the second kind', arity: 2, names: n.besselK, local: besselKLocal, value: cylinderValue('K'), derivative: cylinderDerivative('besselK', -1), equation: cylinderEquation('besselK', -1), domain: 'x > 0', source: 'DLMF 10.27.4' },
+  { id: 'besselJ', title: 'Bessel function of the first kind', arity: 2, names: n.besselJ, local: besselJLocal, together: besselJTogether, value: cylinderValue('J'), derivative: cylinderDerivative('besselJ', 1), equation: cylinderEquation('besselJ', 1), source: 'DLMF 10.2.2' },
+  { id: 'besselY', title: 'Bessel function of the second kind', arity: 2, names: n.besselY, local: besselYLocal, together: besselYTogether, value: cylinderValue('Y'), derivative: cylinderDerivative('besselY', 1), equation: cylinderEquation('besselY', 1), domain: 'x > 0', source: 'DLMF 10.2.3' },
+  { id: 'besselI', title: 'modified Bessel function of the first kind', arity: 2, names: n.besselI, local: besselILocal, together: besselITogether, value: cylinderValue('I'), derivative: cylinderDerivative('besselI', 1), equation: cylinderEquation('besselI', -1), source: 'DLMF 10.25.2' },
+  { id: 'besselK', title: 'modified Bessel function of the second kind', arity: 2, names: n.besselK, local: besselKLocal, together: besselKTogether, value: cylinderValue('K'), derivative: cylinderDerivative('besselK', -1), equation: cylinderEquation('besselK', -1), domain: 'x > 0', source: 'DLMF 10.27.4' },
   { id: 'hankel1', title: 'Hankel function of the first kind', arity: 2, names: n.hankel1, definition: ([v = number(0), x = number(0)]) => sum(call('besselJ', v, x), product(constant('i'), call('besselY', v, x))), domain: 'x > 0', source: 'DLMF 10.4.3' },
   { id: 'hankel2', title: 'Hankel function of the second kind', arity: 2, names: n.hankel2, definition: ([v = number(0), x = number(0)]) => difference(call('besselJ', v, x), product(constant('i'), call('besselY', v, x))), domain: 'x > 0', source: 'DLMF 10.4.3' },
   { id: 'sphericalJ', title: 'spherical Bessel function of the first kind', arity: 2, names: n.sphericalJ, definition: spherical('besselJ'), source: 'DLMF 10.47.3' },

@@ -20,7 +20,7 @@ function poleExponent(n: number, u: Expression): FormalSeries {
 }
 
 /** Stirling's series S(1/z) = sum of B_2k/(2k(2k-1)) z^(1-2k) (DLMF 5.11.1). */
-function stirlingSeries(z: Expression): FormalSeries {
+export function stirlingSeries(z: Expression): FormalSeries {
   return series(over(1, z), (k) => (k % 2 === 0 ? Q.ZERO : Q.divide(bernoulli(k + 1), Q.rational(k * (k + 1)))), { divergent: true });
 }
 

@@ -1,5 +1,5 @@
 /** Arguments of known functions: in brackets, in braces, or bare (`\sin 2\pi x`), with exponents, subscripts and primes on the name. */
-import { build, type Expression, freeSymbols } from '../../expression/index.ts';
+import { build, dependsOn, type Expression, freeSymbols } from '../../expression/index.ts';
 import { isName } from './facts.ts';
 import { describe } from '../../functions/index.ts';
 import { commandName, type KnownName, resolve, wordName } from './functionNames.ts';
@@ -108,7 +108,9 @@ function ownForm(known: KnownName, index: Expression | null, args: readonly Expr
 export function derivativeOfCall(p: State, from: number, id: string, written: string, args: readonly Expression[], primes: number): Expression {
   const last = args[args.length - 1];
   const call: Expression = { kind: 'call', function: id, args, written };
-  if (last?.kind === 'symbol') return node(p, from, { kind: 'derivative', body: node(p, from, call), variable: last, times: primes });
+  // Where another argument holds the symbol too (`J_\nu'(\nu)`), d/du of the whole is another derivative.
+  const alone = last?.kind === 'symbol' && !args.slice(0, -1).some((a) => dependsOn(a, last.name));
+  if (alone) return node(p, from, { kind: 'derivative', body: node(p, from, call), variable: last, times: primes });
   const stated = primes === 1 ? describe(id)?.derivative?.(args, args.length - 1) : null;
   if (stated) return { ...stated, span: node(p, from, call).span };
   return fail(p, `The prime on ${written} is understood only with a single symbol as argument; write the derivative out.`, p.tokens[from]);

@@ -335,6 +335,8 @@ export interface FitAnswer {
   readonly pieces?: readonly FitPieceAnswer[];
   /** Where the argument is reduced first. `coefficients` and `centre` above are then those of the first kernel, `degree` the largest. */
   readonly reduction?: FitReductionAnswer;
+  /** Of a function of two variables: these, as `intervals` names them, in the order in which the emitted function takes them. */
+  readonly arguments?: readonly string[];
   readonly operations?: { readonly multiplications: number; readonly additions: number; readonly fused: number };
   readonly plot?: FitPlotAnswer;
   readonly speed?: FitSpeedAnswer;

@@ -110,6 +110,7 @@ function render(document: vscode.TextDocument, consultation: Consultation, selec
 function headline(consultation: Consultation, answer: ExpandAnswer): string {
   const { reading } = answer;
   const { asked, sources } = consultation;
+  if (answer.value) return `**${escapeMarkdown(vscode.l10n.t('definite integral'))}**`;
   const small = asked.small && asked.small.length > 0 ? vscode.l10n.t('small {0}', asked.small.map(plainSymbol).join(', ')) : null;
   const limit = small ?? limitText(reading?.variableLatex ?? asked.variable ?? '', reading?.point ?? asked.point ?? '0', reading?.side ?? asked.side ?? 'both');
   return `**${escapeMarkdown(limit)}** ${escapeMarkdown(`(${sourcesText(sources, small ? ['small'] : ['variable', 'point'])})`)}`;
@@ -117,6 +118,7 @@ function headline(consultation: Consultation, answer: ExpandAnswer): string {
 
 /** One table: with an interval the remainder's order, its bound and the terms needed; without one how far 2, 3 and 4 terms reach. */
 function figures(answer: ExpandAnswer, { asked }: Consultation): string {
+  if (answer.value) return escapeMarkdown(vscode.l10n.t('The value lies between {0} and {1}.', answer.value.low, answer.value.high));
   if (answer.exact) return escapeMarkdown(vscode.l10n.t('The sum is exact: nothing is left out.'));
   const tolerance = asked.tolerance ?? '';
   if (asked.interval && (answer.bound || answer.needed)) {
@@ -192,7 +194,7 @@ function inkOf(kind: vscode.ColorThemeKind): string {
 }
 
 async function drawn(services: Services, answer: ExpandAnswer): Promise<vscode.MarkdownString | null> {
-  const latex = answer.reading ? `${answer.reading.latex} = ${answer.latex}` : answer.latex;
+  const latex = answer.equation ?? (answer.reading ? `${answer.reading.latex} = ${answer.latex}` : answer.latex);
   const made = await services.client.consult({ desk: 'picture', latex, ink: inkOf(vscode.window.activeColorTheme.kind), width: PICTURE_WIDTH, size: 15 });
   if (!('uri' in made) || made.uri === null) return null;
   return new vscode.MarkdownString(`![${escapeMarkdown(answer.text).slice(0, 300)}](${made.uri})`);

@@ -1,6 +1,6 @@
 /** One Expansion page: what it is about, what it shows, and what its buttons do. The view and the editor tab are both such pages. */
 import * as vscode from 'vscode';
-import type { CheckAnswer, Detail, ErrorAnswer, FitAnswer, GuardAnswer } from '../protocol.ts';
+import type { CheckAnswer, Detail, ErrorAnswer, FitAnswer, FitRequest, GuardAnswer } from '../protocol.ts';
 import type { CodeControls, CopyKind, FromPage, HistoryEntry, Kept, Mode, PageState, Shown, ToPage } from '../webview/messages.ts';
 import type { Place, Proposal, ProposalKind, Question, TextEdit } from '../worker/desk/types.ts';
 import { proposalTitle, withoutOverlap } from './actions.ts';
@@ -22,6 +22,9 @@ const HISTORY_LENGTH = 12;
 /** Controls that hold for every expression; the others are about one. */
 const LASTING: readonly (keyof Question)[] = ['interval', 'tolerance', 'measure'];
 
+/** Calls that are fitted in two variables. */
+const OF_TWO = /hypot|a(?:rc)?tan2|sqrt/i;
+
 interface Focus {
   readonly uri: vscode.Uri;
   readonly place: Place;
@@ -42,7 +45,7 @@ export class Page implements vscode.Disposable {
   #focus: Focus | null = null;
   #chosen: Question = {};
   #mode: Mode = 'expand';
-  #controls: CodeControls = { from: '', to: '', tolerance: '1e-6', measure: 'absolute', format: '', point: '0', variable: '' };
+  #controls: CodeControls = { form: 0, from: '', to: '', tolerance: '1e-6', measure: 'absolute', format: '', point: '0', variable: '', second: '', secondFrom: '', secondTo: '', reduction: 'auto', words: '', assertion: false };
   #pinned = false;
   #shown: Shown = { kind: 'nothing' };
   #consultation: Consultation | null = null;
@@ -79,6 +82,8 @@ export class Page implements vscode.Disposable {
     const same = this.#focus?.uri.toString() === document.uri.toString() && this.#focus.text === text && text !== '';
     const lasting = Object.fromEntries(Object.entries(this.#chosen).filter(([key]) => LASTING.includes(key as keyof Question)));
     this.#chosen = chosen ?? (same ? this.#chosen : lasting);
+    clearTimeout(this.#timer);
+    this.#turn += 1;
     const fresh = !same || this.#mode === 'expand' || this.#mode === 'claims';
     this.#focus = { uri: document.uri, place, text };
     this.#changes = [];
@@ -93,13 +98,18 @@ export class Page implements vscode.Disposable {
 
   /** What notes, memory and settings say about the expression fills the form; what is not said stays empty. */
   async #prefill(document: vscode.TextDocument, place: Place): Promise<void> {
-    // The form comes at once; what is known about the expression follows.
+    // The form comes at once, without what was said of another expression; what is known about this one follows.
+    this.#controls = { ...this.#controls, form: this.#controls.form + 1, from: '', to: '', point: '0', variable: '', second: '', secondFrom: '', secondTo: '' };
+    const { form } = this.#controls;
     this.#shown = this.#emptyForm();
     this.#proposals = [];
     this.#post();
     const { answer, asked, candidates } = await this.#services.consultant.consult(document, place, ['reading']);
+    if (form !== this.#controls.form) return;
     const reading = answer.ok ? answer.reading : undefined;
     const [from, to] = asked.interval ?? ['', ''];
+    const [first, other] = candidates;
+    const pair = candidates.length === 2 && OF_TWO.test(this.#focus?.text ?? '');
     this.#controls = {
       ...this.#controls,
       from,
@@ -107,7 +117,8 @@ export class Page implements vscode.Disposable {
       tolerance: asked.tolerance ?? '1e-6',
       measure: asked.measure ?? 'absolute',
       point: reading?.point ?? asked.point ?? '0',
-      variable: reading?.variable ?? asked.variable ?? (candidates.length === 1 ? (candidates[0] ?? '') : ''),
+      variable: reading?.variable ?? asked.variable ?? (candidates.length === 1 || pair ? (first ?? '') : ''),
+      second: pair ? (other ?? '') : '',
     };
   }
 
@@ -176,6 +187,7 @@ export class Page implements vscode.Disposable {
       case 'mode':
         return this.#turnTo(message.mode);
       case 'code':
+        if (message.controls.form !== this.#controls.form) return undefined;
         this.#controls = message.controls;
         return this.#refresh();
       case 'apply':
@@ -200,6 +212,8 @@ export class Page implements vscode.Disposable {
   async #turnTo(mode: Mode): Promise<void> {
     const document = this.#document();
     const before = this.#mode;
+    clearTimeout(this.#timer);
+    this.#turn += 1;
     this.#mode = mode;
     if (document && this.#focus && (mode === 'fit' || mode === 'guard') && before !== 'fit' && before !== 'guard') await this.#prefill(document, this.#focus.place);
     await this.#refresh();
@@ -228,10 +242,12 @@ export class Page implements vscode.Disposable {
   async #followTo(editor: vscode.TextEditor): Promise<void> {
     const { document } = editor;
     const place = selectionOf(document, editor.selection);
+    const turn = this.#turn;
     const now = this.#consultation;
     if (now?.place && now.uri === document.uri.toString() && now.version === document.version && editor.selection.isEmpty && now.place.start <= place.start && place.end <= now.place.end) return;
     const tried = await this.#services.consultant.consult(document, place, DETAILS);
-    if (this.#pinned || document.version !== tried.version) return;
+    // Whatever was asked for meanwhile (a form for code, another place) goes first.
+    if (this.#pinned || turn !== this.#turn || document.version !== tried.version) return;
     if (tried.answer.ok && (tried.worthwhile || !editor.selection.isEmpty)) await this.show(document, editor.selection.isEmpty ? (tried.place ?? place) : place);
   }
 
@@ -345,11 +361,11 @@ export class Page implements vscode.Disposable {
       ...(controls.variable === '' ? {} : { variable: controls.variable }),
     } as const;
     if (mode === 'fit' && interval) {
-      answer = await this.#services.client.ask<FitAnswer>({ ask: 'fit', ...common, interval, tolerance: controls.tolerance, measure: controls.measure, form: settings.form, details: ['plot'] }, signal);
+      answer = await this.#services.client.ask<FitAnswer>({ ask: 'fit', ...common, ...fitOptions(controls, interval), form: settings.form, details: ['plot'] }, signal);
     } else if (mode === 'guard') {
       answer = await this.#services.client.ask<GuardAnswer>({ ask: 'guard', ...common, point: controls.point || '0', ...(interval ? { interval } : {}) }, signal);
     }
-    const proposals = answer?.ok ? await this.#services.client.consult({ desk: 'replacement', text: common.text, language, place, code: answer.code, imports: answer.imports ?? [], argument: controls.variable }) : null;
+    const proposals = answer?.ok ? await this.#services.client.consult({ desk: 'replacement', text: common.text, language, place, code: answer.code, imports: answer.imports ?? [], argument: argumentsOf(answer, controls) }) : null;
     if (turn !== this.#turn || document.version !== version) return;
     this.#stale = null;
     this.#consultation = null;
@@ -438,6 +454,22 @@ export class Page implements vscode.Disposable {
     void this.#webview.postMessage(message);
   }
 }
+
+/** What the form says beyond the interval, left out where it says nothing. */
+function fitOptions({ tolerance, measure, variable, second, secondFrom, secondTo, reduction, words, assertion }: CodeControls, interval: readonly [string, string]): Pick<FitRequest, 'interval' | 'intervals' | 'tolerance' | 'measure' | 'reduction' | 'words' | 'assertion'> {
+  return {
+    interval,
+    tolerance,
+    measure,
+    ...(second !== '' && secondFrom !== '' && secondTo !== '' ? { intervals: { [variable]: interval, [second]: [secondFrom, secondTo] } } : {}),
+    ...(reduction === 'auto' ? {} : { reduction }),
+    ...(words === '' ? {} : { words: words === '1' ? 1 : 2 }),
+    ...(assertion ? { assertion } : {}),
+  };
+}
+
+/** What the new function is called with. */
+const argumentsOf = (answer: FitAnswer | GuardAnswer, { variable }: CodeControls): string => ('arguments' in answer && answer.arguments ? answer.arguments.join(', ') : variable);
 
 /** Markdown for a review. */
 function claimsReport(name: string, { summary, rows }: Extract<Shown, { readonly kind: 'claims' }>): string {

@@ -160,11 +160,18 @@ function answerOf(found: Fit, problem: FitProblem, request: FitRequest, constant
     operations: countOperations(found.program),
     ...speedOf(found, problem),
     ...(found.reduction ? { reduction: reductionAnswer(found, found.reduction) } : {}),
+    ...(found.arguments ? { arguments: asNamed(found.arguments, problem, request) } : {}),
     ...(request.details?.includes('plot') && !found.reduction ? { plot: fitPlot(found, problem, time) } : {}),
     ...centreOf(found.centre, found.format),
     ...(found.denominator ? { denominator: coefficients(found.denominator, found.format) } : {}),
     ...(found.pieces ? { pieces: found.pieces.map((piece): FitPieceAnswer => ({ from: endText(piece.low, problem.low, problem, 0), to: endText(piece.high, problem.high, problem, 1), coefficients: coefficients(piece.terms, found.format), degree: piece.degree, bound: up(piece.error.total), ...centreOf(piece.centre, found.format) })) } : {}),
   };
+}
+
+/** Variables under the names that the request gave them. */
+function asNamed(variables: readonly string[], { variable }: FitProblem, { intervals }: FitRequest): string[] {
+  const [first, other] = Object.keys(intervals ?? {});
+  return variables.map((name) => (name === variable ? first : other) ?? name);
 }
 
 const centreOf = (centre: Rational, format: FitProblem['format']): { readonly centre?: string } => (Q.isZero(centre) ? {} : { centre: format.kind === 'float' ? shortestDecimal(centre, format.name) : up(centre) });

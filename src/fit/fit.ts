@@ -70,6 +70,8 @@ export interface Fit {
   readonly pieces?: readonly PieceFit[];
   /** Where the argument is reduced first: how, and the polynomials on the small interval in r; `terms` and `centre` are those of the first one. */
   readonly reduction?: { readonly method: string; readonly kernels: readonly KernelFit[] };
+  /** Of a function of two variables: these in the order of the function's parameters. */
+  readonly arguments?: readonly string[];
   /** How it was proved, in words. */
   readonly method: string;
   readonly code: FitCodeText;
@@ -150,7 +152,7 @@ function pair(problem: FitProblem, second: SecondVariable, whole: PolynomialProb
   const [first, other] = names.every((n) => n !== null) ? names : found.kind === 'hypot' ? ['x', 'y'] : ['y', 'x'];
   if (!a || !b || !first || !other) throw new RangeError('two variables');
   const reduced = reducePair({ kind: found.kind, whole, row: rowFor(problem.language), parameters: [first, other], boxes: [a, b] }, budget);
-  return reducedFit(problem, [first, other], whole, reduced, written, found.kind);
+  return { ...reducedFit(problem, [first, other], whole, reduced, written, found.kind), arguments: found.variables };
 }
 
 function reducedFit(problem: FitProblem, parameters: readonly string[], whole: PolynomialProblem, { kernels, body, error, method }: Reduced, written: FloatFormat, word?: string): Fit {

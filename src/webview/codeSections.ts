@@ -1,4 +1,5 @@
 /** The forms for programs: a polynomial in place of a call, and a guarded form of what cancels. */
+import type { CoefficientAnswer, FitAnswer } from '../protocol.ts';
 import { codeControls } from './controls.ts';
 import { type Child, h } from './dom.ts';
 import { shortened } from './figures.ts';
@@ -27,18 +28,15 @@ export function fitSection(shown: Fitted, into: HTMLElement, width: number, sett
       { class: 'facts', 'aria-live': 'polite' },
       h('p', {}, t('degree', answer.degree), answer.taylorDegree !== null && h('span', { class: 'muted' }, `; ${t('taylor', answer.taylorDegree)}`)),
       allowance(bound.total, bound.measure === shown.controls.measure ? shown.controls.tolerance : '', bound.measure === 'ulp' ? ' ulp' : ''),
-      answer.operations && h('p', { class: 'muted' }, t('operations', answer.operations.multiplications, answer.operations.additions), answer.speed && `; ${t('speed', answer.speed.ratio)}`),
+      answer.reduction && h('p', {}, h('span', { class: 'muted' }, `${t('reduced')} `), answer.reduction.method),
+      answer.operations && h('p', { class: 'muted' }, operationsText(answer.operations)),
+      answer.speed && speedLine(answer.speed),
     ),
     into,
     answer.plot && answer.plot.x.length > 1 && h('section', { class: 'plots' }, h('h2', {}, `${t('fitErrorPlot')} (${t(answer.plot.measure)})`), fitErrorPlot(answer.plot, width)),
     h('section', {}, h('h2', {}, `${t('bound')} (${t(bound.measure)})`), h('table', { class: 'figures' }, h('tbody', {}, ...parts.map(([name, value]) => h('tr', {}, h('th', { scope: 'row' }, name), h('td', {}, value))), h('tr', { class: 'total' }, h('th', { scope: 'row' }, t('total')), h('td', {}, bound.total)))), h('p', { class: 'muted' }, bound.method)),
     code(answer.code),
-    h(
-      'details',
-      {},
-      h('summary', {}, t('coefficients')),
-      h('table', { class: 'figures' }, h('thead', {}, h('tr', {}, h('th', { scope: 'col' }, t('power')), h('th', { scope: 'col' }, t('value')), h('th', { scope: 'col' }, t('hex')))), h('tbody', {}, ...answer.coefficients.map((c) => h('tr', {}, h('th', { scope: 'row' }, String(c.power)), h('td', {}, c.value), h('td', {}, c.hex))))),
-    ),
+    h('details', {}, h('summary', {}, t('coefficients')), ...coefficientTables(answer)),
     assumptions(answer.assumptions ?? []),
   ];
 }
@@ -64,6 +62,32 @@ export function guardSection(shown: Guarded, into: HTMLElement, settle: (control
     assumptions(answer.assumptions),
   ];
 }
+
+const operationsText = ({ multiplications, additions, fused }: NonNullable<FitAnswer['operations']>): string => (fused > 0 ? t('operationsFused', multiplications, additions, fused) : t('operations', multiplications, additions));
+
+/** Few digits: it is an estimate from counted operations. */
+function speedLine({ ratio }: NonNullable<FitAnswer['speed']>): HTMLElement {
+  const digits = (factor: number): string => String(Number(factor.toPrecision(2)));
+  return ratio >= 1 ? h('p', { class: 'muted' }, t('faster', digits(ratio))) : h('p', { class: 'caution' }, t('slower', digits(1 / ratio)));
+}
+
+/** One table for each polynomial: of the whole interval, of each piece, or of each function of the reduced argument. */
+function coefficientTables({ coefficients, centre, denominator, pieces, reduction }: FitAnswer): HTMLElement[] {
+  const about = (middle: string | undefined): string => (middle === undefined ? '' : `; ${t('about', middle)}`);
+  if (reduction) return reduction.kernels.map((kernel) => coefficientTable(kernel.coefficients, `${kernel.function} ${t('onInterval', kernel.from, kernel.to)}${about(kernel.centre)}`));
+  if (pieces) return pieces.map((piece) => coefficientTable(piece.coefficients, `${t('onInterval', brief(piece.from), brief(piece.to))}${about(piece.centre)}`));
+  if (denominator) return [coefficientTable(coefficients, t('numerator')), coefficientTable(denominator, t('denominator'))];
+  return [coefficientTable(coefficients, centre === undefined ? '' : t('about', centre))];
+}
+
+const coefficientTable = (list: readonly CoefficientAnswer[], caption: string): HTMLElement =>
+  h(
+    'table',
+    { class: 'figures' },
+    caption !== '' && h('caption', {}, caption),
+    h('thead', {}, h('tr', {}, ...[t('power'), t('value'), t('hex')].map((name) => h('th', { scope: 'col' }, name)))),
+    h('tbody', {}, ...list.map((c) => h('tr', {}, h('th', { scope: 'row' }, String(c.power)), h('td', {}, c.value), h('td', {}, c.hex)))),
+  );
 
 /** The proven error as a part of what was allowed. */
 function allowance(total: string, allowed: string, unit: string): Child {

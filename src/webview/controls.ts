@@ -42,11 +42,11 @@ export interface ExpandValues {
 export function expandControls(values: ExpandValues, choose: (question: Question) => void): HTMLElement {
   const { asked, origins } = values;
   const [from, to] = asked.interval ?? ['', ''];
-  const ends = { from, to };
-  const settleInterval = (change: Partial<typeof ends>): void => {
-    Object.assign(ends, change);
-    if (ends.from !== '' && ends.to !== '') choose({ interval: [ends.from, ends.to] });
-    else if (ends.from === '' && ends.to === '') choose({ interval: undefined });
+  const now = { from, to };
+  const settleInterval = (change: Partial<typeof now>): void => {
+    Object.assign(now, change);
+    if (now.from !== '' && now.to !== '') choose({ interval: [now.from, now.to] });
+    else if (now.from === '' && now.to === '') choose({ interval: undefined });
   };
   const suggestions = h('datalist', { id: 'candidates' }, ...values.candidates.map((candidate) => h('option', { value: candidate })));
   return h(
@@ -64,18 +64,7 @@ export function expandControls(values: ExpandValues, choose: (question: Question
         ['left', t('left')],
       ], (side) => choose({ side })),
     ),
-    h(
-      'div',
-      { class: 'field', role: 'group', 'aria-label': t('interval') },
-      h('label', { for: 'from' }, t('interval')),
-      h(
-        'span',
-        { class: 'pair' },
-        named(entry(from, (value) => settleInterval({ from: value }), { placeholder: t('from') }), 'from', `${t('interval')} ${t('from')}`),
-        named(entry(to, (value) => settleInterval({ to: value }), { placeholder: t('to') }), 'to', `${t('interval')} ${t('to')}`),
-      ),
-      asked.interval && origins.interval && h('span', { class: 'origin', title: origins.interval }, origins.interval),
-    ),
+    ends(t('interval'), ['from', 'to'], [from, to], (value) => settleInterval({ from: value }), (value) => settleInterval({ to: value }), asked.interval && origins.interval),
     field('tolerance', t('tolerance'), entry(asked.tolerance ?? '', (tolerance) => choose({ tolerance })), origins.tolerance),
     field(
       'measure',
@@ -121,7 +110,7 @@ function named<E extends HTMLElement>(element: E, id: string, label: string): E 
   return element;
 }
 
-const TYPED = ['variable', 'from', 'to', 'tolerance', 'point'] as const;
+const TYPED = ['variable', 'from', 'to', 'tolerance', 'point', 'second', 'secondFrom', 'secondTo'] as const;
 function typedIn(form: HTMLFormElement): Partial<Pick<CodeControls, (typeof TYPED)[number]>> {
   return Object.fromEntries(
     TYPED.flatMap((name) => {
@@ -143,12 +132,7 @@ export function codeControls(kind: 'fit' | 'guard', controls: CodeControls, sett
   const formats: readonly (readonly [string, string])[] = [['', t('asInCode')], ...['binary64', 'binary32', 'binary16', 'bfloat16'].map((name) => [name, name] as const)];
   const shared: Child[] = [
     field('variable', t('argument'), entry(controls.variable, (variable) => change({ variable }))),
-    h(
-      'div',
-      { class: 'field', role: 'group', 'aria-label': t('interval') },
-      h('label', { for: 'from' }, t('interval')),
-      h('span', { class: 'pair' }, named(entry(controls.from, (from) => change({ from }), { placeholder: t('from') }), 'from', `${t('interval')} ${t('from')}`), named(entry(controls.to, (to) => change({ to }), { placeholder: t('to') }), 'to', `${t('interval')} ${t('to')}`)),
-    ),
+    ends(t('interval'), ['from', 'to'], [controls.from, controls.to], (from) => change({ from }), (to) => change({ to })),
     field('format', t('format'), choice(controls.format, formats, (format) => now({ format }))),
   ];
   const own: Child[] =
@@ -170,6 +154,7 @@ export function codeControls(kind: 'fit' | 'guard', controls: CodeControls, sett
     'form',
     {
       class: 'controls',
+      'data-form': controls.form,
       on: {
         submit: (event) => {
           event.preventDefault();
@@ -182,5 +167,52 @@ export function codeControls(kind: 'fit' | 'guard', controls: CodeControls, sett
     shared,
     own,
     h('button', { type: 'submit', class: 'primary compute', id: 'compute' }, t('compute')),
+    kind === 'fit' && moreOptions(controls, change, now),
+  );
+}
+
+/** What few fits need: another argument, the reduction of the argument, the leading coefficient, an assertion of the range. */
+function moreOptions(controls: CodeControls, change: (part: Partial<CodeControls>) => void, now: (part: Partial<CodeControls>) => void): HTMLElement {
+  const asserts = h('input', { type: 'checkbox', id: 'assertion', checked: controls.assertion });
+  asserts.addEventListener('change', () => now({ assertion: asserts.checked }));
+  return h(
+    'details',
+    { class: 'options', open: controls.second !== '' },
+    h('summary', { id: 'options' }, t('options')),
+    h(
+      'div',
+      { class: 'inner' },
+      field('second', t('second'), entry(controls.second, (second) => change({ second }), { placeholder: t('none') })),
+      ends(t('secondInterval'), ['secondFrom', 'secondTo'], [controls.secondFrom, controls.secondTo], (secondFrom) => change({ secondFrom }), (secondTo) => change({ secondTo })),
+      field(
+        'reduction',
+        t('reduction'),
+        choice(controls.reduction, [
+          ['auto', t('whereNeeded')],
+          ['none', t('never')],
+          ['always', t('always')],
+        ], (reduction) => now({ reduction })),
+      ),
+      field(
+        'words',
+        t('words'),
+        choice(controls.words, [
+          ['', t('whereNeeded')],
+          ['1', t('oneFloat')],
+          ['2', t('twoFloats')],
+        ], (words) => now({ words })),
+      ),
+      h('div', { class: 'field check' }, h('label', { for: 'assertion' }, asserts, ' ', t('assertion'))),
+    ),
+  );
+}
+
+function ends(label: string, [low, high]: readonly [string, string], [from, to]: readonly [string, string], settleFrom: (end: string) => void, settleTo: (end: string) => void, origin?: string): HTMLElement {
+  return h(
+    'div',
+    { class: 'field', role: 'group', 'aria-label': label },
+    h('label', { for: low }, label),
+    h('span', { class: 'pair' }, named(entry(from, settleFrom, { placeholder: t('from') }), low, `${label} ${t('from')}`), named(entry(to, settleTo, { placeholder: t('to') }), high, `${label} ${t('to')}`)),
+    origin && h('span', { class: 'origin', title: origin }, origin),
   );
 }

@@ -31,6 +31,8 @@ export function expansionSection(shown: Expanded, into: HTMLElement, width: numb
       choose,
     ),
     facts(answer, asked, shown.unbounded),
+    replaced(answer, asked),
+    components(answer),
     ladder(answer, asked, choose),
     plots(answer, asked, width),
     ...details(answer),
@@ -38,8 +40,8 @@ export function expansionSection(shown: Expanded, into: HTMLElement, width: numb
 }
 
 function formula(answer: ExpandAnswer): HTMLElement {
-  const left = answer.reading ? `${answer.reading.latex} ` : '';
-  return h('div', { class: 'formula', id: 'formula', tabindex: '0', role: 'group', 'aria-label': answer.text }, math(`${left}${left ? '= ' : ''}${answer.latex}`, true), answer.left && h('div', { class: 'other' }, h('span', { class: 'muted' }, t('left2')), math(answer.left.latex, true)));
+  const whole = answer.equation ?? (answer.reading ? `${answer.reading.latex} = ${answer.latex}` : answer.latex);
+  return h('div', { class: 'formula', id: 'formula', tabindex: '0', role: 'group', 'aria-label': answer.text }, math(whole, true), answer.left && h('div', { class: 'other' }, h('span', { class: 'muted' }, t('left2')), math(answer.left.latex, true)));
 }
 
 function facts(answer: ExpandAnswer, asked: Question, noBound: string | undefined): HTMLElement {
@@ -54,6 +56,8 @@ function facts(answer: ExpandAnswer, asked: Question, noBound: string | undefine
     else add([h('span', { class: 'muted' }, `${asked.interval ? t('boundOn', ...asked.interval.map((end) => end.replaceAll('-', '−'))) : t('bound')} `), h('strong', { id: 'bound', title: answer.bound.value }, shortened(answer.bound.value, 'above')), answer.bound.factor ? [' · ', h('code', {}, answer.bound.factor)] : against(answer.bound.value, asked.tolerance)]);
   }
   if (answer.needed) lines.push(...neededLines(answer, asked));
+  if (answer.value) add(t('integral', answer.value.low, answer.value.high), 'good');
+  if (answer.leastTerm) add(t('leastTerm', answer.at?.argument ?? asked.at ?? '', answer.leastTerm.terms, shortened(answer.leastTerm.size, 'above')), 'caution');
   if (answer.at) add(`${t('at')} ${t('atRow', answer.at.argument, answer.at.function, answer.at.sum, answer.at.error)}`);
   if (answer.radius) add(answer.radius.value === 'inf' ? t('entire') : t('radius', answer.radius.value), 'muted');
   return h('div', { class: 'facts', 'aria-live': 'polite' }, lines);
@@ -83,9 +87,33 @@ function neededLines(answer: ExpandAnswer, asked: Question): Child[] {
   return [h('p', { class: 'caution', id: 'needed' }, [t('neededNone', tolerance, needed.reason ?? ''), ...more].join(' '))];
 }
 
+/** The pieces of an equation that was simplified in place. */
+function replaced(answer: ExpandAnswer, { at, interval }: Question): Child {
+  const { replaced: pieces } = answer;
+  if (!pieces || pieces.length === 0) return null;
+  const errors = pieces.map(({ relativeError: e }) => [e?.percent ? t('percent', shortened(e.percent, 'above'), at ?? '') : '', e?.bound && interval ? t('atMost', shortened(e.bound, 'above'), ...interval) : ''].filter(Boolean).join('; '));
+  const judged = errors.some((text) => text !== '');
+  const columns = [t('piece'), t('instead'), ...(judged ? [t('relativeError')] : [])];
+  return h(
+    'section',
+    {},
+    h('h2', {}, t('replaced')),
+    h(
+      'table',
+      { class: 'figures' },
+      h('thead', {}, h('tr', {}, ...columns.map((name) => h('th', { scope: 'col' }, name)))),
+      h('tbody', {}, ...pieces.map(({ from, to }, i) => h('tr', {}, h('td', {}, math(from)), h('td', {}, math(to)), judged && h('td', {}, errors[i] || '–')))),
+    ),
+  );
+}
+
+/** Of a system, every unknown function. */
+const components = ({ components: all }: ExpandAnswer): Child =>
+  all && all.length > 1 && h('section', {}, h('h2', {}, t('components')), h('ul', { class: 'plain' }, ...all.map(({ unknown, expansion }) => h('li', {}, math(`${unknown} = ${expansion.latex}`)))));
+
 function plots(answer: ExpandAnswer, asked: Question, width: number): HTMLElement | null {
   const { plot } = answer;
-  if (!plot || plot.x.length < 2) return answer.exact ? null : h('p', { class: 'muted note' }, t('noPlot'));
+  if (!plot || plot.x.length < 2) return answer.exact || answer.value || answer.components ? null : h('p', { class: 'muted note' }, t('noPlot'));
   return h('section', { class: 'plots' }, h('h2', {}, t('functionAndSum')), functionPlot(plot, answer.terms.length, width), h('h2', {}, t('errorPlot')), errorPlot(plot, answer, asked, width), h('p', { class: 'muted note' }, t('plotNote')));
 }
 
@@ -102,6 +130,7 @@ function details(answer: ExpandAnswer): Child[] {
         proof.length > 0 && h('ol', {}, ...proof.map((step) => h('li', {}, step))),
         bound.lower !== null && h('p', { class: 'muted' }, t('lower', shortened(bound.lower, 'below'))),
       ),
+    answer.value && answer.proof && answer.proof.length > 0 && h('details', { id: 'proof' }, h('summary', {}, t('proof')), h('ol', {}, ...answer.proof.map((step) => h('li', {}, step)))),
     answer.assumptions.length > 0 && h('section', {}, h('h2', {}, t('assumptions')), h('ul', { class: 'plain' }, ...answer.assumptions.map((assumption) => h('li', {}, h('code', {}, assumption))))),
     answer.general && h('section', {}, h('h2', {}, t('general')), math(answer.general)),
     answer.branches && answer.branches.length > 0 && h('section', {}, h('h2', {}, t('branches')), h('ol', {}, ...answer.branches.map((branch) => h('li', {}, math(branch.latex))))),

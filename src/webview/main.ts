@@ -49,9 +49,12 @@ function draw(): void {
   const active = document.activeElement;
   const focused = active instanceof HTMLElement && root.contains(active) ? active.id : '';
   const typed = active instanceof HTMLInputElement ? { value: active.value, from: active.selectionStart, to: active.selectionEnd, given: active.defaultValue } : null;
+  const unsent = typedInForm();
   const scroll = document.documentElement.scrollTop;
   root.replaceChildren(...flat(content(state)));
   for (const details of root.querySelectorAll('details')) if (openDetails.has(details.querySelector('summary')?.textContent ?? '')) details.open = true;
+  const form = root.querySelector<HTMLFormElement>('form[data-form]');
+  if (unsent && form?.dataset['form'] === unsent.form) for (const [id, value] of unsent.values) setValue(form.querySelector(`#${id}`), value);
   const again = focused ? document.getElementById(focused) : null;
   if (again) {
     again.focus({ preventScroll: true });
@@ -61,6 +64,17 @@ function draw(): void {
     }
   }
   document.documentElement.scrollTop = scroll;
+}
+
+/** What stands in the fields of a form for code and was not sent yet. */
+function typedInForm(): { readonly form: string; readonly values: readonly (readonly [string, string])[] } | null {
+  const form = root.querySelector<HTMLFormElement>('form[data-form]');
+  if (!form) return null;
+  const typed = [...form.querySelectorAll<HTMLInputElement>('input[type=text]')].filter((input) => input.value !== input.defaultValue);
+  return { form: form.dataset['form'] ?? '', values: typed.map(({ id, value }) => [id, value] as const) };
+}
+function setValue(field: Element | null, value: string): void {
+  if (field instanceof HTMLInputElement) field.value = value;
 }
 
 const flat = (children: readonly Child[]): Node[] => children.flatMap((child) => (Array.isArray(child) ? flat(child as readonly Child[]) : child instanceof Node ? [child] : typeof child === 'string' ? [document.createTextNode(child)] : []));

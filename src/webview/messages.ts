@@ -1,5 +1,5 @@
 /** What passes between the Expansion page and its host. Plain JSON both ways. */
-import type { ErrorAnswer, ExpandAnswer, FitAnswer, FitMeasure, GuardAnswer, Verdict } from '../protocol.ts';
+import type { ErrorAnswer, ExpandAnswer, FitAnswer, FitMeasure, FitRequest, GuardAnswer, Verdict } from '../protocol.ts';
 import type { Question, Sources } from '../worker/desk/types.ts';
 
 export type Mode = 'expand' | 'fit' | 'guard' | 'claims';
@@ -16,6 +16,8 @@ export interface ClaimRow {
 
 /** The controls of a polynomial or a guarded form, as typed. */
 export interface CodeControls {
+  /** Counts the expressions that the form was about: what an older one still sends is dropped. */
+  readonly form: number;
   readonly from: string;
   readonly to: string;
   readonly tolerance: string;
@@ -24,6 +26,15 @@ export interface CodeControls {
   readonly format: string;
   readonly point: string;
   readonly variable: string;
+  /** Of a function of two variables: the other one and its interval; empty otherwise. */
+  readonly second: string;
+  readonly secondFrom: string;
+  readonly secondTo: string;
+  readonly reduction: NonNullable<FitRequest['reduction']>;
+  /** Floats of the leading coefficient; empty: as many as the tolerance needs. */
+  readonly words: '' | '1' | '2';
+  /** The code asserts its range. */
+  readonly assertion: boolean;
 }
 
 export type Shown =

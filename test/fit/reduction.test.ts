@@ -135,6 +135,19 @@ describe('two variables', () => {
       expect(below).toBeLessThanOrEqual(Number(answer.bound.subnormal ?? 0));
     }
   });
+  it('the answer names its variables in the order in which the code takes them', async () => {
+    for (const [text, intervals, parameters] of [
+      ['atan2(v, w)', { w: ['1', '2'], v: ['0', '1'] }, 'v, w'],
+      ['hypot(s, p)', { p: ['0', '1'], s: ['0', '2'] }, null],
+      // These two are names of the function's own: its parameters are called y and x.
+      ['atan2(k, a)', { a: ['1', '2'], k: ['0', '1'] }, 'k, a'],
+    ] as const) {
+      const answer = await ask({ text, intervals, tolerance: 1e-3 });
+      if (!answer.ok || !('arguments' in answer)) throw new Error('no fit');
+      const [, first, second] = /approximation\(double (\w+), double (\w+)\)/.exec(answer.code) ?? [];
+      expect(answer.arguments?.join(', ')).toBe(parameters ?? `${first}, ${second}`);
+    }
+  });
   it('other functions of two variables are declined', async () => {
     const answer = await ask({ text: 'sin(x*y)', intervals: { x: ['0', '1'], y: ['0', '1'] }, tolerance: 1e-3 });
     expect(answer.ok ? '' : answer.error.message).toMatch(/hypot\(x, y\)/);

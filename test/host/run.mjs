@@ -1,5 +1,5 @@
 // The driven run in the real web workbench: first the suite inside its extension host, then scenes at the keyboard, then the page's accessibility. Closes with `N passed, N failed`.
-// `node test/host/run.mjs [in-host] [words of scene names ...]`
+// `node test/host/run.mjs [in-host | accessibility [themes ...] | words of scene names ...]`
 import { spawnSync } from 'node:child_process';
 import path from 'node:path';
 import { requireNode } from '../../src/start/requireNode.mjs';
@@ -28,8 +28,8 @@ if (!browser) {
 process.stdout.write(`browser ${browser.version()}\n`);
 try {
   if (wanted.length === 0 || wanted.includes('in-host')) await inHost();
-  if (!wanted.includes('in-host')) await driven();
-  if (wanted.length === 0 || wanted.includes('accessibility')) await accessibility(browser, tally);
+  if (!wanted.includes('in-host') && !wanted.includes('accessibility')) await driven();
+  if (wanted.length === 0 || wanted.includes('accessibility')) await accessibility(browser, tally, wanted);
 } finally {
   await browser.close().catch(() => {});
 }

@@ -17,12 +17,27 @@ export async function consult(request: ConsultRequest, engine: Engine): Promise<
     selection.start,
   );
   if (above.skip) return declined('A note above says to skip this formula.');
-  const { asked, sources } = weigh([
+  const layers: readonly Layer[] = [
     ['chosen', request.chosen ?? {}],
     ['note', questionOf(above)],
     ['fileNote', questionOf(file)],
     ['remembered', request.remembered ?? {}],
-  ]);
+  ];
+  const noted = Object.keys(above).length > 0;
+  const found = await consultWith(layers, noted, request, engine);
+  const { sources } = found;
+  const owner = sources.variable ?? sources.small;
+  if ((owner !== 'fileNote' && owner !== 'remembered') || !isFree(found.answer)) return found;
+  // What was settled for a whole file is about the formulas that hold the quantity.
+  const own = await consultWith(layers.map(([source, question]) => [source, source === 'fileNote' || source === 'remembered' ? withoutQuantity(question) : question]), noted, request, engine);
+  return own.answer.ok || own.candidates.length > 1 ? own : found;
+}
+
+type Layer = readonly [Source, Question];
+
+async function consultWith(layers: readonly Layer[], noted: boolean, request: ConsultRequest, engine: Engine): Promise<ConsultAnswer> {
+  const { text, selection } = request;
+  const { asked, sources } = weigh(layers);
   const told = { ...request.setting };
   // Small quantities of the settings are a list of habits: the first that occurs in the formula counts, and only where nothing else was said.
   const habits = told.small ?? [];
@@ -44,7 +59,7 @@ export async function consult(request: ConsultRequest, engine: Engine): Promise<
       place: reading ? { start: reading.start, end: reading.end } : placeOf(answer, request),
       candidates: (answer.ok ? reading?.candidates : answer.error.candidates) ?? [],
       ...(unbounded === undefined ? {} : { unbounded }),
-      worthwhile: !answer.ok || Object.keys(above).length > 0 || saysSomething(answer),
+      worthwhile: !answer.ok || noted || saysSomething(answer),
     };
   }
   return declined('Nothing could be asked about this place; select an expression.');
@@ -60,10 +75,13 @@ async function expansionAnyway(request: ConsultRequest, question: Question, engi
 }
 
 const declined = (message: string): ConsultAnswer => ({ answer: { ok: false, error: { code: 'bad-request', message } }, asked: {}, sources: {}, place: null, candidates: [], worthwhile: false });
+const withoutQuantity = ({ variable: _variable, small: _small, point: _point, side: _side, interval: _interval, ...rest }: Question): Question => rest;
+/** The formula does not hold the quantity. */
+const isFree = (answer: ExpandAnswer | ErrorAnswer): boolean => answer.ok && answer.exact && answer.prefactor === undefined && answer.terms.every(({ power, log, scale }) => power === '0' && log === 0 && scale === undefined);
 const withoutSmall = ({ small: _small, ...rest }: Question): Question => rest;
 
 /** Every part from the strongest source that has it. A variable and several small quantities exclude each other; a point goes with its variable. */
-function weigh(layers: readonly (readonly [Source, Question])[]): { readonly asked: Question; readonly sources: Sources } {
+function weigh(layers: readonly Layer[]): { readonly asked: Question; readonly sources: Sources } {
   const asked: Record<string, unknown> = {};
   const sources: Partial<Record<keyof Question, Source>> = {};
   const owner = (): Source | undefined => sources.variable ?? sources.small;

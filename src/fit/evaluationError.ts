@@ -95,11 +95,14 @@ function powerOfTwoFactor(e: Expression): number | null {
   return Q.equal(Q.absolute(e.value), powerOfTwo(k)) ? k : null;
 }
 
-/** a - b is exact where both are floats and b/2 <= a <= 2b (Sterbenz, Floating-Point Computation, 1974, cited from memory). */
-function sterbenz(a: RoundedValue, b: RoundedValue): boolean {
-  if (a.absolute !== 0 || b.absolute !== 0) return false;
-  const apart = (x: Interval, y: Interval): boolean => x.lo > 0 && y.lo > 0 && y.hi <= 2 * x.lo && x.hi <= 2 * y.lo;
-  return apart(a.exact, interval.negate(b.exact)) || apart(interval.negate(a.exact), b.exact);
+/**
+ * A sum is exact where no bit of it can lie below the last place of both operands nor above what the significand reaches: floats of at least 2^e in size are multiples
+ * of 2^(e-p+1), and so are their sums, which are floats while they are below 2^(e+1). A product fused into it is rounded by no more than it would be by itself.
+ */
+function sumsExactly(a: RoundedValue, b: RoundedValue, size: number, { emin }: FloatFormat): boolean {
+  const least = ({ exact, absolute }: RoundedValue): number => (absolute === 0 ? interval.leastSize(exact) : interval.down(interval.leastSize(exact) - up(absolute / SCALE)));
+  const smaller = Math.min(least(a), least(b));
+  return smaller >= 2 ** emin && size < 2 ** (binadeOf(smaller) + 1);
 }
 
 /** Constants are looked at once per format, not once per piece. */
@@ -169,8 +172,8 @@ class Evaluator {
     const error = addUp(a.absolute, b.absolute);
     // Sums of floats below twice the smallest normal number are exact: all are multiples of the smallest subnormal. A product fused into the sum is then
     // rounded to such a multiple once, by no more than it would be by itself.
-    if (addUp(interval.size(sum.exact), up(error / SCALE)) < 2 ** (this.#format.emin + 1)) return withError(sum, error, error);
-    return sterbenz(a, b) ? withError(sum, 0, 0) : rounded(sum, error, this.#format);
+    const size = addUp(interval.size(sum.exact), up(error / SCALE));
+    return size < 2 ** (this.#format.emin + 1) || sumsExactly(a, b, size, this.#format) ? withError(sum, error, error) : rounded(sum, error, this.#format);
   }
 
   #sum(a: Exact, b: Exact): Exact {

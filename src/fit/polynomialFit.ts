@@ -55,6 +55,8 @@ export interface PolynomialFit {
   /** The same operations with the language's multiply-add. */
   readonly writtenProgram: Program;
   readonly error: ProvedError;
+  /** sup |p - f| in the absolute measure, else sup |p - f| / |f|: a proven upper bound, evaluation not included. */
+  readonly certified: Rational;
 }
 
 const WORKING_BITS = 320;
@@ -262,5 +264,5 @@ function finished({ search, proof }: Setting, { found, terms, polynomial, progra
     target.order,
   )];
   const ideal = certifiedTerms(unrounded, proof, budget);
-  return { target, terms, unrounded, degree: found.degree, basis, centre: target.zero, program, writtenProgram, error: errorParts(total, polynomial, ideal, proof, budget) };
+  return { target, terms, unrounded, degree: found.degree, basis, centre: target.zero, program, writtenProgram, error: errorParts(total, polynomial, ideal, proof, budget), certified: polynomial.whole.upper };
 }

@@ -2,10 +2,13 @@
 import { build, Q, type Rational, substitute } from '../../expression/index.ts';
 import type { Expression } from '../../expression/index.ts';
 import { type Budget, Declined } from '../../outcome.ts';
-import { type Ball, real } from '../../rigorous/index.ts';
+import { type Ball, type Interval, real } from '../../rigorous/index.ts';
 import type { Statement } from '../../write/index.ts';
 import { type FloatFormat, powerOfTwo, roundTo } from '../format.ts';
-import { absoluteOf, allowedOff, arithmeticOf, choice, fitKernel, greater, inParts, kernelStatements, lastRounded, let_, leastIn, largestIn, REDUCED, type Reduced, type ReductionProblem, relation, requireSolid, tooSmall, valueRange } from './kernel.ts';
+import type { Arithmetic } from '../program.ts';
+import type { FitMeasure } from '../proof.ts';
+import { assembledError, piecesOf } from './assembled.ts';
+import { absoluteOf, allowedOff, arithmeticOf, choice, fitKernel, greater, inParts, type Kernel, kernelStatements, lastRounded, lesser, let_, leastIn, largestIn, REDUCED, type Reduced, type ReductionProblem, relation, requireSolid, tooSmall, valueRange } from './kernel.ts';
 import { halfUlp, roundedUp } from './parts.ts';
 import { CONSTANT_BITS, constantBall } from './recognise.ts';
 
@@ -29,6 +32,31 @@ export function twoWords(multiple: Rational, a: Ball, format: FloatFormat): TwoW
   const high = roundTo(middle, format) ?? Q.ZERO;
   const low = roundTo(Q.subtract(middle, high), format) ?? Q.ZERO;
   return { high, low, missing: Q.add(Q.absolute(Q.subtract(middle, Q.add(high, low))), Q.subtract(real.upper(value), real.lower(value))) };
+}
+
+interface Reconstruction {
+  readonly low: Rational;
+  readonly high: Rational;
+  readonly measure: FitMeasure;
+  readonly arithmetic: Arithmetic;
+  /** What the exact polynomial misses. */
+  readonly missing: Rational;
+}
+
+/** |x| beyond which -1/x is looked at as a whole. */
+const FAR = Q.rational(64);
+const PIECES = 48;
+
+/** The outer octants by the very operations of the code; null where a piece has no bound in the measure. */
+function piecewise({ found }: Kernel, [quarter, half]: readonly TwoWords[], { low, high, measure, arithmetic, missing }: Reconstruction): Rational | null {
+  const x = build.symbol('x');
+  const largest = greater(Q.absolute(low), Q.absolute(high));
+  const { steps, result } = found.program;
+  const bound = (words: TwoWords, r: Expression, pieces: readonly Interval[]): Rational | null =>
+    assembledError({ program: { steps: [{ name: REDUCED, value: r }, ...steps], result: build.sum(build.number(words.high), build.sum(build.number(words.low), result)) }, variable: 'x', pieces, missing: Q.add(missing, words.missing) }, measure, arithmetic);
+  const middle = quarter && Q.compare(largest, FIRST_OCTANT) > 0 ? bound(quarter, build.quotient(build.sum(x, build.number(Q.MINUS_ONE)), build.sum(x, build.number(1))), piecesOf(FIRST_OCTANT, lesser(largest, SECOND_OCTANT), PIECES)) : Q.ZERO;
+  const outer = half && Q.compare(largest, SECOND_OCTANT) > 0 ? bound(half, build.quotient(build.number(Q.MINUS_ONE), x), [...piecesOf(SECOND_OCTANT, lesser(largest, FAR), PIECES), ...(Q.compare(largest, FAR) > 0 ? piecesOf(FAR, largest, 1) : [])]) : Q.ZERO;
+  return middle && outer && greater(middle, outer);
 }
 
 export function reduceArctangent(problem: ReductionProblem, factor: Expression, budget: Budget): Reduced {
@@ -63,7 +91,9 @@ export function reduceArctangent(problem: ReductionProblem, factor: Expression, 
   const kernel = fitKernel(problem, { function: f, low: Q.negate(WINDOW), high: WINDOW, measure, ...(goal ? { tolerance: goal } : {}) }, budget);
   requireSolid(kernel, largest, format);
   const { error } = kernel.found;
-  const total = totalOf(error.total);
+  const uniform = outside(absoluteOf(error.total, measure, largest, format));
+  const sharp = piecewise(kernel, ranges, { low, high, measure, arithmetic, missing: measure === 'absolute' ? kernel.found.certified : Q.multiply(kernel.found.certified, largest) });
+  const total = greater(error.total, sharp && Q.compare(sharp, uniform) < 0 ? sharp : uniform);
   const x = build.symbol(parameter);
   const signed = Q.signOf(low) < 0;
   const [size_, h, l, y] = ['a', 'h', 'l', 'y'].map(build.symbol);

@@ -1,11 +1,12 @@
 /** sin and cos of c x + d: x = k T + r with T = pi / (2 c); four quarters, two polynomials. */
 import { build, type Expression, Q, type Rational, substitute } from '../../expression/index.ts';
 import { type Budget, Declined } from '../../outcome.ts';
-import { encloseInterval, interval, real } from '../../rigorous/index.ts';
+import { type Ball, encloseInterval, interval, real } from '../../rigorous/index.ts';
 import { describe } from '../../functions/index.ts';
 import { powerOfTwo } from '../format.ts';
-import { arithmeticOf, fitKernel, greater, inParts, kernelStatements, let_, REDUCED, type Reduced, type ReductionProblem, relation, requireSolid, tooSmall } from './kernel.ts';
-import { nearestInteger, reduced, roundedUp, splitPeriod } from './parts.ts';
+import { piecesOf } from './assembled.ts';
+import { arithmeticOf, fitKernel, greater, inParts, kernelStatements, lesser, let_, REDUCED, type Reduced, type ReductionProblem, relation, requireSolid, tooSmall } from './kernel.ts';
+import { nearestInteger, type Period, reduced, roundedUp, splitPeriod } from './parts.ts';
 import { CONSTANT_BITS, constantBall } from './recognise.ts';
 
 const SHARE = Q.rational(1, 16);
@@ -30,7 +31,7 @@ export function reduceCircular(problem: ReductionProblem, rate: Expression, quar
   const moved = Q.multiply(Q.multiply(speed, amplitude), split.error);
   if (whole.tolerance && Q.compare(moved, absoluteGoal) >= 0) throw tooSmall(whole, whole.tolerance);
   // Nothing is lost of arguments in the quarter about zero; elsewhere |f| is at least `least`.
-  const shared = { low: Q.negate(split.reach), high: split.reach, measure, inherited: { absolute: moved, relative: roundedUp(Q.divide(moved, least)) }, ...(whole.tolerance ? { tolerance: whole.tolerance } : {}) };
+  const shared = { low: Q.negate(split.reach), high: split.reach, measure, inherited: { absolute: moved, relative: measure === 'absolute' ? Q.ZERO : movedShare(problem, period, split, [f, g], { speed, amplitude }) ?? roundedUp(Q.divide(moved, least)) }, ...(whole.tolerance ? { tolerance: whole.tolerance } : {}) };
   const even = fitKernel(problem, { ...shared, function: f }, budget);
   const odd = fitKernel(problem, { ...shared, function: g }, budget);
   for (const kernel of [even, odd]) requireSolid(kernel, amplitude, format);
@@ -68,6 +69,34 @@ function amplitudeOf(f: Expression, g: Expression): Rational {
   const root = real.sqrt(real.fromRational(square, 96), 96);
   if (!root) throw new Declined('undecided', 'The amplitude of this function could not be bounded.');
   return roundedUp(real.upper(root));
+}
+
+/** Quarters that are looked at one by one, and the pieces of each. */
+const FEW_QUARTERS = 8;
+const QUARTER_PIECES = 64;
+
+/** sup |f'/f| times what r is off by, quarter by quarter; null where there are many or a piece cannot be told from a zero. */
+function movedShare({ whole: { low, high } }: ReductionProblem, period: Ball, split: Period, [f, g]: readonly [Expression, Expression], { speed, amplitude }: { readonly speed: Rational; readonly amplitude: Rational }): Rational | null {
+  if (split.most - split.least > FEW_QUARTERS) return null;
+  let worst = Q.ZERO;
+  for (let k = split.least; k <= split.most; k += 1) {
+    if (k === 0) continue;
+    const turns = real.multiply(real.fromRational(Q.rational(k), CONSTANT_BITS), period, CONSTANT_BITS);
+    const from = greater(Q.negate(split.reach), Q.subtract(low, real.upper(turns)));
+    const to = lesser(split.reach, Q.subtract(high, real.lower(turns)));
+    if (Q.compare(from, to) >= 0) continue;
+    const [own, slope] = k % 2 === 0 ? [f, g] : [g, f];
+    for (const r of piecesOf(from, to, QUARTER_PIECES)) {
+      const [value, rate] = [own, slope].map((e) => encloseInterval(e, new Map([[REDUCED, r]]), describe));
+      const size = value ? interval.leastSize(value) : 0;
+      if (!rate || !(size > 0)) return null;
+      const off = split.errorAt(Math.abs(k), Q.fromDouble(interval.size(r)));
+      // Between r and what is computed for it.
+      const steepest = Q.add(Q.fromDouble(interval.size(rate)), Q.multiply(Q.multiply(speed, amplitude), off));
+      worst = greater(worst, Q.divide(Q.multiply(Q.multiply(off, speed), steepest), Q.fromDouble(size)));
+    }
+  }
+  return roundedUp(worst);
 }
 
 const PIECES = 256;

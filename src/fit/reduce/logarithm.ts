@@ -4,7 +4,8 @@ import { type Budget, Declined } from '../../outcome.ts';
 import { real } from '../../rigorous/index.ts';
 import { binaryExponent, type FloatFormat, powerOfTwo, roundTo, ulp } from '../format.ts';
 import type { Statement } from '../../write/index.ts';
-import { arithmeticOf, choice, fitKernel, greater, inParts, kernelStatements, lastRounded, largestIn, leastIn, absoluteOf, allowedOff, let_, REDUCED, type Reduced, type ReductionProblem, relation, requireSolid, tooSmall, valueRange } from './kernel.ts';
+import { assembledError, piecesOf } from './assembled.ts';
+import { arithmeticOf, choice, fitKernel, greater, inParts, kernelStatements, lastRounded, largestIn, leastIn, lesser, absoluteOf, allowedOff, let_, REDUCED, type Reduced, type ReductionProblem, relation, requireSolid, tooSmall, valueRange } from './kernel.ts';
 import { halfUlp, roundedUp } from './parts.ts';
 import { CONSTANT_BITS, constantBall } from './recognise.ts';
 
@@ -36,6 +37,10 @@ export function exponentRange(low: Rational, high: Rational): readonly [number, 
   };
   return [exponent(low), exponent(high)];
 }
+
+/** Exponents e for which the sum is bounded piece by piece, and the pieces. */
+const NEAR_ZERO = 3;
+const PIECES = 64;
 
 export function reduceLogarithm(problem: ReductionProblem, factor: Expression, budget: Budget): Reduced {
   const { whole, row, parameter } = problem;
@@ -74,16 +79,13 @@ export function reduceLogarithm(problem: ReductionProblem, factor: Expression, b
     const lowPart = Q.multiply(Q.rational(Math.abs(n)), Q.absolute(second));
     return Q.add(Q.add(Q.multiply(Q.rational(Math.abs(n)), missing), Q.multiply(lowPart, powerOfTwo(-operations.precision))), halfUlp(Q.add(Q.multiply(Q.add(lowPart, largest), Q.rational(17, 16)), kernelError), operations));
   };
-  const whenOff = (kernelError: Rational): Rational => {
-    let worst = Q.ZERO;
-    for (let n = least; n <= most; n += 1) {
-      if (n === 0) continue;
-      const off = Q.add(kernelError, spent(n, kernelError));
-      const reach = Q.add(Q.multiply(Q.rational(Math.abs(n)), Q.absolute(middle)), largest);
-      worst = greater(worst, lastRounded(off, leastFor(n), Q.compare(reach, size) < 0 ? reach : size, measure, arithmetic));
-    }
-    return worst;
+  const whenExponent = (n: number, kernelError: Rational): Rational => {
+    const off = Q.add(kernelError, spent(n, kernelError));
+    const reach = Q.add(Q.multiply(Q.rational(Math.abs(n)), Q.absolute(middle)), largest);
+    return lastRounded(off, leastFor(n), Q.compare(reach, size) < 0 ? reach : size, measure, arithmetic);
   };
+  const exponents = Array.from({ length: most - least + 1 }, (_, k) => least + k).filter((n) => n !== 0);
+  const whenOff = (kernelError: Rational): Rational => exponents.reduce((worst, n) => greater(worst, whenExponent(n, kernelError)), Q.ZERO);
   const whenZero = (kernelError: Rational): Rational => {
     if (least > 0 || most < 0) return Q.ZERO;
     return inner === measure ? kernelError : Q.divide(kernelError, measure === 'ulp' ? ulp(leastAtEnds, result) : leastAtEnds);
@@ -94,15 +96,28 @@ export function reduceLogarithm(problem: ReductionProblem, factor: Expression, b
   const kernel = fitKernel(problem, { function: f, ...window, measure: inner, ...(goal ? { tolerance: goal } : {}) }, budget);
   requireSolid(kernel, largest, format);
   const { error } = kernel.found;
-  const total = totalOf(error.total);
   const { steps, value } = kernelStatements(kernel.found.writtenProgram);
+  const summed = (polynomial: Expression, lowPart: Expression, highPart: Expression): Expression => build.sum(Q.isZero(second) ? polynomial : build.sum(lowPart, polynomial), highPart);
+  const uniform = absoluteOf(error.total, inner, largest, format);
+  const certified = kernel.found.certified;
+  const kernelMissing = inner === 'absolute' ? certified : Q.multiply(certified, largest);
+  /** Piece by piece near the zero of f, where the uniform bound is loose. */
+  const whenSmall = (n: number): Rational => {
+    const bound = whenExponent(n, uniform);
+    if (Math.abs(n) > NEAR_ZERO) return bound;
+    const [from, to] = [n === least ? greater(window.low, Q.divide(low, powerOfTwo(n))) : window.low, n === most ? lesser(window.high, Q.divide(high, powerOfTwo(n))) : window.high];
+    const whole = build.number(n);
+    const result = summed(kernel.found.program.result, build.product(whole, build.number(second)), build.number(Q.multiply(Q.rational(n), first)));
+    const sharp = assembledError({ program: { steps: kernel.found.program.steps, result }, variable: REDUCED, pieces: piecesOf(from, to, PIECES), missing: Q.add(kernelMissing, Q.multiply(Q.rational(Math.abs(n)), missing)) }, measure, arithmetic);
+    return sharp && Q.compare(sharp, bound) < 0 ? sharp : bound;
+  };
+  const total = exponents.map(whenSmall).reduce(greater, whenZero(error.total));
   const e = build.symbol('e');
   const times = (part: Rational): Expression => build.product(e, build.number(part));
-  const sum = Q.isZero(second) ? value : build.sum(times(second), value);
   const approximation = inner === measure ? error.approximation : Q.ZERO;
   return {
     kernels: [kernel],
-    body: [...decomposed(build.symbol(parameter), low, operations), ...steps, { kind: 'return', value: build.sum(sum, times(first)), rounded: row.family === 'javascript' }],
+    body: [...decomposed(build.symbol(parameter), low, operations), ...steps, { kind: 'return', value: summed(value, times(second), times(first)), rounded: row.family === 'javascript' }],
     error: inParts(total, Q.compare(approximation, total) < 0 ? approximation : total, Q.ZERO, error.subnormal),
     method: `${parameter} = r 2^e exactly, ${Q.toText(window.low)} < r <= ${Q.toText(window.high)}, e in ${least}..${most}; result p(r) + e T, T = ${Q.toDouble(middle).toPrecision(6)} in two parts, the first times e exact`,
   };

@@ -18,6 +18,8 @@ export interface Period {
   readonly reach: Rational;
   /** Bound for |computed - (x - k T)|; nothing is lost where k = 0. */
   readonly error: Rational;
+  /** The same for |k| at most `count`, not zero, where |x - k T| is at most `reach`. */
+  readonly errorAt: (count: number, reach: Rational) => Rational;
   /** k lies in [least, most]. */
   readonly least: number;
   readonly most: number;
@@ -85,12 +87,13 @@ export function splitPeriod(period: Ball, low: Rational, high: Rational, { opera
   if (bits < 6 || count >= 2 ** 30) throw beyond(Q.multiply(size, powerOfTwo(Math.min(result.precision - 6, 30))), what, result);
   const half = Q.add(Q.HALF, margin);
   const parts: Rational[] = [];
+  const exactPeriod: ExactPeriod = { value: middle, spread: Q.subtract(upper, lower), smallest: Q.multiply(Q.subtract(Q.ONE, half), size), arithmetic: { operations, result } };
   let best: { readonly parts: readonly Rational[]; readonly error: Rational; readonly reach: Rational } | null = null;
   let rest = middle;
   for (let n = 1; n <= MOST_PARTS; n += 1) {
     const last = roundTo(rest, result);
     if (!last || (!Q.isZero(rest) && binaryExponent(rest) < result.emin)) break;
-    const tried = lossOf([...parts, last], middle, Q.subtract(upper, lower), half, size, count, bitsOfCount, { operations, result });
+    const tried = lossOf([...parts, last], exactPeriod, Q.multiply(half, size), count);
     if (!best || Q.compare(Q.multiply(tried.error, Q.rational(17, 16)), best.error) < 0) best = tried;
     if (Q.compare(tried.error, allowed) <= 0) break;
     const part = shortened(rest, bits);
@@ -99,18 +102,26 @@ export function splitPeriod(period: Ball, low: Rational, high: Rational, { opera
     if (Q.isZero(rest)) break;
   }
   if (!best) throw new Declined('bad-request', `The period ${what} is out of range in ${result.name}; ask for another format.`);
-  return { parts: best.parts, inverse, reach: roundedUp(best.reach), error: roundedUp(best.error), least, most };
+  const taken = best.parts;
+  return { parts: taken, inverse, reach: roundedUp(best.reach), error: roundedUp(best.error), errorAt: (k, closest) => roundedUp(lossOf(taken, exactPeriod, closest, k).error), least, most };
 }
 
 const beyond = (limit: Rational, what: string, { name }: FloatFormat): Declined =>
   new Declined('bad-request', `Beyond |x| about ${Q.toDouble(limit).toPrecision(3)} multiples of ${what} cannot be taken off exactly in ${name}; take a smaller interval or a wider format.`);
 
-/** The differences v_i = x - k (c_1 + ... + c_i), computed one after the other, with or without fusing. */
-function lossOf(parts: readonly Rational[], period: Rational, spread: Rational, half: Rational, size: Rational, count: number, bitsOfCount: number, { operations, result }: Arithmetic): { readonly parts: readonly Rational[]; readonly error: Rational; readonly reach: Rational } {
+/** T as the middle of its enclosure, how wide that is, and the least |x| that is no nearer to zero than to a multiple of T. */
+interface ExactPeriod {
+  readonly value: Rational;
+  readonly spread: Rational;
+  readonly smallest: Rational;
+  readonly arithmetic: Arithmetic;
+}
+
+/** The differences v_i = x - k (c_1 + ... + c_i), |k| <= count, computed one after the other, with or without fusing; `exactReach` bounds |x - k T|. */
+function lossOf(parts: readonly Rational[], { value: period, spread, smallest, arithmetic: { operations, result } }: ExactPeriod, exactReach: Rational, count: number): { readonly parts: readonly Rational[]; readonly error: Rational; readonly reach: Rational } {
   const k = Q.rational(count);
-  const exactReach = Q.multiply(half, size);
+  const bitsOfCount = count.toString(2).length;
   // Where k is not zero, x is a float of the result's format beyond T/2 - margin: a multiple of its last place there.
-  const smallest = Q.multiply(Q.subtract(Q.ONE, half), size);
   let grid = binaryExponent(smallest) - result.precision + 1;
   let [sum, error, reach] = [Q.ZERO, Q.ZERO, exactReach];
   parts.forEach((c, i) => {

@@ -1,10 +1,13 @@
 /** Integral nodes whose limits move: the derivative in t is integrated term by term, and the constant is fixed by the limits. */
-import { children, type Expression, type IntegralNode, Q } from '../../expression/index.ts';
+import type { Element } from '../../algebra/types.ts';
+import { build, children, type Expression, type IntegralNode, Q, substitute } from '../../expression/index.ts';
 import { Declined } from '../../outcome.ts';
-import { eventualSign, exactOf, growth, integrate, isKnownZero, isZero, type Multi, multiply, Series, split, subtract, theta, withExact } from '../../series/index.ts';
+import { add, type Context, eventualSign, exactOf, growth, integrate, isKnownZero, isZero, monomialOf, type Multi, multiply, orderSeries, Series, split, subtract, theta, unitMonomial, withExact } from '../../series/index.ts';
 import { type Evaluate, bind, type Session } from '../session.ts';
+import { completeIntegral } from './complete.ts';
 import { byMoments } from './moments.ts';
-import { laplaceForm, watson } from './watson.ts';
+import { regularOn } from './monotone.ts';
+import { integrableAt, laplaceForm, watson } from './watson.ts';
 
 export function evaluateIntegral(s: Session, e: IntegralNode, evaluate: Evaluate): Multi {
   const { context: c } = s;
@@ -24,7 +27,11 @@ export function evaluateIntegral(s: Session, e: IntegralNode, evaluate: Evaluate
   const above = upper.moving === null ? Q.ZERO : primitiveAt(s, e, name, upper.moving, evaluate);
   const below = lower.moving === null ? Q.ZERO : primitiveAt(s, e, name, lower.moving, evaluate);
   const total = subtract(c, above, below);
-  if (!sameLimit(s, upper, lower)) throw new Declined('no-expansion', 'The constant of this integral is not known in closed form; let its limits tend to the same place.');
+  if (!sameLimit(s, upper, lower)) {
+    const known = acrossLimits(s, e, name, lower, upper, above, below, evaluate);
+    if (known) return known;
+    throw new Declined('no-expansion', 'The constant of this integral is not known in closed form; let its limits tend to the same place.');
+  }
   // Each primitive has no constant in t: it is the one that vanishes at the common limit only if it tends to zero.
   const settled = [above, below].every((m) => growth(c, m) === 'small' || growth(c, m) === 'zero');
   if (!settled) {
@@ -32,6 +39,42 @@ export function evaluateIntegral(s: Session, e: IntegralNode, evaluate: Evaluate
     throw new Declined('no-expansion', one ? 'The integral diverges at the point; correct its limits.' : 'The constant of this integral between two moving limits is not known; split it.');
   }
   return withExact(total, () => ({ ...e, lower: limitTree(s, lower, e.lower as Expression), upper: limitTree(s, upper, e.upper as Expression) }));
+}
+
+/**
+ * Limits that tend to different places: the integral between these places, where it is known, and what is missing at each end.
+ * Where the primitive outgrows every power at an infinite upper end, the constant is an O(1) that never shows.
+ */
+function acrossLimits(s: Session, e: IntegralNode, v: string, lower: End, upper: End, above: Multi, below: Multi, evaluate: Evaluate): Multi | null {
+  const c = s.context;
+  const { field } = c;
+  const settled = (m: Multi): boolean => growth(c, m) === 'small' || growth(c, m) === 'zero';
+  const total = subtract(c, above, below);
+  const from = lower.limit instanceof Series ? null : lower.limit;
+  if (settled(above) && settled(below)) {
+    const [start, end] = [fromZero(c, e.body, v, lower), fromZero(c, e.body, v, upper)];
+    return start && end && add(c, total, field.subtract(end, start));
+  }
+  // The lower end is fixed and the integrand regular from there on.
+  if (!settled(below) || lower.moving !== null || from === null || upper.sign !== 1 || !outgrowsPowers(c, above)) return null;
+  const low = e.lower as Expression;
+  if (!regularOn({ variable: v, low, high: null, field }, e.body) || !integrableAt(s, e.body, v, low, evaluate)) return null;
+  return add(c, total, orderSeries(c, unitMonomial));
+}
+
+/** The integral from 0 to where the end tends to. */
+function fromZero(c: Context, body: Expression, v: string, { limit, sign }: End): Element | null {
+  const { field } = c;
+  if (limit instanceof Series) return null;
+  if (limit !== null) return isZero(c, limit) ? Q.ZERO : field.sign(limit) === 1 ? completeIntegral(field, body, v, field.toExpression(limit)) : null;
+  const whole = completeIntegral(field, sign === -1 ? substitute(body, v, build.negation(build.symbol(v))) : body, v, null);
+  return whole && (sign === -1 ? field.negate(whole) : whole);
+}
+
+/** Whether the leading term holds a growing exponential. */
+function outgrowsPowers(c: Context, m: Multi): boolean {
+  const lead = growth(c, m) === 'large' ? monomialOf(c, m) : null;
+  return lead?.factors[0]?.element.kind === 'exponential' && lead.factors[0].element.rank > c.scale.local.rank;
 }
 
 /** Constant limits and the variable in the integrand. */

@@ -141,6 +141,16 @@ export function watson(s: Session, form: LaplaceForm, v: string, low: Expression
 
 const transfer = (to: Context, from: Context, e: Element): Element => (isRational(e) ? e : to.field.fromExpression(from.field.toExpression(e)));
 
+/** Whether (v - low) f(v) tends to zero faster than any logarithm could undo: f is integrable to the right of low. */
+export function integrableAt(s: Session, body: Expression, v: string, low: Expression, evaluate: Evaluate): boolean {
+  const inner = openSide({ variable: build.symbol(v), point: low, assumptions: [] }, 'right', s.context.budget);
+  const lead = monomialOf(inner.context, evaluate(inner.session, inner.fromVariable(body)));
+  if (!lead) return true;
+  const [first] = lead.factors;
+  if (!first) return true;
+  return first.element === inner.context.scale.local && compareExponents(inner.context, first.exponent, Q.MINUS_ONE) === 1;
+}
+
 /** g exp(-K phi) must be integrable at the far end for some K. */
 function requireIntegrable(s: Session, weight: Expression, phi: Expression, v: string, far: Expression | null, direction: 1 | -1, evaluate: Evaluate): void {
   const { context: c } = s;

@@ -1,5 +1,6 @@
 /** Symbolic derivatives of trees by the rules of calculus and the derivatives that descriptions state. */
 import { build, type Expression, freeSymbols, Q } from '../expression/index.ts';
+import { asRational } from './exactForms.ts';
 import { describe } from './registry.ts';
 
 const isZero = (e: Expression): boolean => e.kind === 'number' && Q.isZero(e.value);
@@ -34,13 +35,16 @@ export function differentiate(e: Expression, name: string, along: (symbol: strin
     case 'quotient': {
       const [above, below] = [d(e.numerator), d(e.denominator)];
       if (!above || !below) return null;
-      const first = times(above, build.power(e.denominator, -1));
-      return isZero(below) ? first : plus([first, build.negation(times(e.numerator, below, build.power(e.denominator, -2)))]);
+      if (isZero(below)) return build.quotient(above, e.denominator);
+      return build.quotient(plus([times(above, e.denominator), build.negation(times(e.numerator, below))]), build.power(e.denominator, 2));
     }
     case 'power': {
       const [base, exponent] = [d(e.base), d(e.exponent)];
       if (!base || !exponent) return null;
-      const lower = e.exponent.kind === 'number' ? build.number(Q.subtract(e.exponent.value, Q.ONE)) : build.difference(e.exponent, build.number(1));
+      const constant = asRational(e.exponent);
+      if (constant && Q.isOne(constant)) return base;
+      if (constant) return times(build.number(constant), Q.equal(constant, Q.rational(2)) ? e.base : build.power(e.base, Q.subtract(constant, Q.ONE)), base);
+      const lower = build.difference(e.exponent, build.number(1));
       const byBase = isZero(base) ? build.number(0) : times(e.exponent, build.power(e.base, lower), base);
       const logarithm = e.base.kind === 'constant' && e.base.name === 'e' ? build.number(1) : build.call('log', e.base);
       return plus([byBase, isZero(exponent) ? exponent : times(e, logarithm, exponent)]);

@@ -1,11 +1,11 @@
 /** The guard of an expression: the form that serves each range of the argument, the switch between them, and the proof of the whole. */
 import { type Assumption, build, dependsOn, freeSymbols, Q, type Rational } from '../expression/index.ts';
 import { parityOf } from '../fit/index.ts';
+import { differentiate } from '../functions/index.ts';
 import { type Budget, Declined } from '../outcome.ts';
 import { interval as doubles } from '../rigorous/index.ts';
 import { isRepresentable, powerOfTwo, roundToFormat, shortestDecimal, toPlain } from '../write/index.ts';
 import { guardCode, rowFor } from './code.ts';
-import { differentiate } from './differentiate.ts';
 import { exactForms, type ExactForm } from './forms.ts';
 import type { Piece } from './pieces.ts';
 import { type Scan, Scanner, type Side, worstBeyond } from './region.ts';

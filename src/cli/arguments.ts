@@ -26,6 +26,8 @@ fit
   --interval 'A, B'   --tolerance T | --degree N   --measure absolute|relative|ulp
   --format binary32|binary64   --emit LANGUAGE   --form horner|estrin
   --method minimax|taylor|economized|rational   --pieces N|auto
+  --reduction auto|none|always   --words 1|2   --exact N   --assertion
+  --intervals 'x: A, B; y: C, D' (functions of two variables)
 guard
   --point P   --interval 'A, B'   --format F   --emit LANGUAGE
 check
@@ -57,6 +59,11 @@ const OPTIONS = {
   contraction: { type: 'string' },
   method: { type: 'string' },
   pieces: { type: 'string' },
+  reduction: { type: 'string' },
+  words: { type: 'string' },
+  exact: { type: 'string' },
+  assertion: { type: 'boolean' },
+  intervals: { type: 'string' },
   library: { type: 'string' },
   of: { type: 'string' },
   json: { type: 'boolean' },
@@ -118,6 +125,16 @@ export function splitInterval(text: string): readonly string[] {
   return parts.map((p) => p.trim());
 }
 
+/** `x: a, b; y: c, d` by variable; a part without a colon is kept under the empty name, which the engine refuses. */
+export function splitIntervals(text: string): Readonly<Record<string, readonly string[]>> {
+  return Object.fromEntries(
+    text.split(';').filter((part) => part.trim() !== '').map((part): [string, readonly string[]] => {
+      const [, name = '', ends = part] = /^([^:]*):(.*)$/s.exec(part) ?? [];
+      return [name.trim(), splitInterval(ends)];
+    }),
+  );
+}
+
 /** The request object; the engine validates it. */
 export function requestOf(command: Exclude<CommandName, 'batch' | 'check'>, text: string, values: Values): Readonly<Record<string, unknown>> {
   const count = (value: string | undefined): number | undefined => (value === undefined ? undefined : Number(value));
@@ -147,6 +164,11 @@ export function requestOf(command: Exclude<CommandName, 'batch' | 'check'>, text
     contraction: values.contraction,
     method: values.method,
     pieces: values.pieces === undefined || values.pieces === 'auto' ? values.pieces : Number(values.pieces),
+    reduction: values.reduction,
+    words: count(values.words),
+    exact: count(values.exact),
+    assertion: values.assertion,
+    intervals: values.intervals === undefined ? undefined : splitIntervals(values.intervals),
     library: count(values.library),
   };
   return Object.fromEntries(Object.entries(all).filter(([, value]) => value !== undefined));

@@ -138,7 +138,7 @@ describe('two variables', () => {
   it('the answer names its variables in the order in which the code takes them', async () => {
     for (const [text, intervals, parameters] of [
       ['atan2(v, w)', { w: ['1', '2'], v: ['0', '1'] }, 'v, w'],
-      ['hypot(s, p)', { p: ['0', '1'], s: ['0', '2'] }, null],
+      ['hypot(by, ax)', { ax: ['0', '1'], by: ['0', '2'] }, null],
       // These two are names of the function's own: its parameters are called y and x.
       ['atan2(k, a)', { a: ['1', '2'], k: ['0', '1'] }, 'k, a'],
     ] as const) {

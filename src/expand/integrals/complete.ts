@@ -6,19 +6,29 @@
  * - t^(s-1) (c + d t^m)^(-r): a beta function (DLMF 5.12.3); on (0, (c/d)^(1/m)) the same with d < 0 (DLMF 5.12.1).
  */
 import type { Element, Field } from '../../algebra/types.ts';
-import { build, dependsOn, type Expression, Q, type Rational } from '../../expression/index.ts';
+import { build, dependsOn, type Expression, Q, type Rational, substitute } from '../../expression/index.ts';
 import { Declined } from '../../outcome.ts';
 import { decayingSeries, type ResidueClass } from './geometric.ts';
 
+/** Ends of (0, inf) at which the integral must converge; at the other one the analytic continuation in s stands for it. */
+export interface Convergence {
+  readonly atZero: boolean;
+  readonly atInfinity: boolean;
+}
+/** The exponent e of v^e in a continuation. */
+export const SHIFT = "e'";
+
+const AT_BOTH: Convergence = { atZero: true, atInfinity: true };
+
 /** The integral of body over (0, high), high null for infinity; null where none of the forms above fits. */
-export function completeIntegral(field: Field, body: Expression, v: string, high: Expression | null): Element | null {
+export function completeIntegral(field: Field, body: Expression, v: string, high: Expression | null, ends: Convergence = AT_BOTH): Element | null {
   try {
     // As a whole first: the terms of 1 - tanh t have no integrals of their own.
-    const joint = body.kind === 'sum' ? ofTerm(field, body, v, high) : null;
+    const joint = body.kind === 'sum' ? ofTerm(field, body, v, high, ends) : null;
     if (joint) return joint;
     let total: Element = Q.ZERO;
     for (const term of termsOf(body)) {
-      const value = ofTerm(field, term, v, high);
+      const value = ofTerm(field, term, v, high, ends);
       if (!value) return null;
       total = field.add(total, value);
     }
@@ -41,11 +51,11 @@ interface Factors {
   readonly others: { readonly base: Expression; readonly exponent: Element }[];
 }
 
-function ofTerm(field: Field, e: Expression, v: string, high: Expression | null): Element | null {
+function ofTerm(field: Field, e: Expression, v: string, high: Expression | null, ends: Convergence): Element | null {
   const parts: Factors = { constant: Q.ONE, power: Q.ZERO, others: [] };
   if (!sort(field, e, v, Q.ONE, parts)) return null;
   const s = field.add(parts.power, Q.ONE);
-  const value = (high === null ? (byZeta(field, parts, v, s) ?? byGamma(field, parts, v, s)) : null) ?? byBeta(field, parts, v, s, high);
+  const value = (high === null ? (byZeta(field, parts, v, s, ends) ?? byGamma(field, parts, v, s, ends)) : null) ?? byBeta(field, parts, v, s, high, ends);
   return value && field.multiply(parts.constant, value);
 }
 
@@ -87,17 +97,17 @@ function other(base: Expression, exponent: Element, into: Factors): boolean {
 }
 
 /** sum over the classes of sum over k of P(k) k^(-s), times Gamma(s) rate^(-s). */
-function byZeta(field: Field, parts: Factors, v: string, s: Element): Element | null {
+function byZeta(field: Field, parts: Factors, v: string, s: Element, ends: Convergence): Element | null {
   const series = decayingSeries(field, parts.others, v);
   if (!series) return null;
   // Integrable at 0: t^(s-1) times a pole of that order.
-  if (field.compare(s, Q.rational(Math.max(series.poleAtOne, 0))) !== 1) return null;
-  const sum = series.classes.reduce<Element | null>((total, c) => total && addClass(field, total, c, s, series.classes), Q.ZERO);
+  if (ends.atZero && field.compare(s, Q.rational(Math.max(series.poleAtOne, 0))) !== 1) return null;
+  const sum = series.classes.reduce<Element | null>((total, c) => total && addClass(field, total, c, s, series.classes, ends), Q.ZERO);
   if (!sum) return null;
   return field.multiply(field.multiply(field.call('gamma', [s]), field.power(series.rate, field.negate(s))), sum);
 }
 
-function addClass(field: Field, sum: Element, { residue, modulus, powers, corrections }: ResidueClass, s: Element, all: readonly ResidueClass[]): Element | null {
+function addClass(field: Field, sum: Element, { residue, modulus, powers, corrections }: ResidueClass, s: Element, all: readonly ResidueClass[], ends: Convergence): Element | null {
   let total = sum;
   const a = Q.rational(residue, modulus);
   for (const { power, coefficient } of powers) {
@@ -109,7 +119,7 @@ function addClass(field: Field, sum: Element, { residue, modulus, powers, correc
       const poles = all.flatMap((c) => c.powers).filter((p) => p.power === power);
       if (Q.signOf(poles.reduce<Rational>((x, p) => Q.add(x, p.coefficient), Q.ZERO)) !== 0) return null;
       value = field.negate(field.call('digamma', [a]));
-    } else if (fixed === null && field.compare(order, Q.ONE) !== 1) return null;
+    } else if (ends.atZero && fixed === null && field.compare(order, Q.ONE) !== 1) return null;
     else value = Q.isOne(a) ? field.call('zeta', [order]) : field.call('hurwitzZeta', [order, a]);
     total = field.add(total, field.multiply(field.multiply(coefficient, field.power(Q.rational(modulus), field.negate(order))), value));
   }
@@ -124,9 +134,9 @@ function monomialIn(field: Field, e: Expression, v: string): { readonly coeffici
   return { coefficient: parts.constant, degree: parts.power };
 }
 
-function byGamma(field: Field, { others }: Factors, v: string, s: Element): Element | null {
+function byGamma(field: Field, { others }: Factors, v: string, s: Element, ends: Convergence): Element | null {
   const [only] = others;
-  if (!only || others.length !== 1 || field.sign(s) !== 1) return null;
+  if (!only || others.length !== 1 || (ends.atZero && field.sign(s) !== 1)) return null;
   const { base } = only;
   const exponent = base.kind === 'call' && base.function === 'exp' ? base.args[0] : base.kind === 'power' && base.base.kind === 'constant' && base.base.name === 'e' ? base.exponent : undefined;
   const monomial = exponent ? monomialIn(field, exponent, v) : null;
@@ -138,9 +148,9 @@ function byGamma(field: Field, { others }: Factors, v: string, s: Element): Elem
 }
 
 /** The integral of t^(s-1) (c + d t^m)^(-r): with u = s/m it is c^(-r) (c/d)^u B(u, r - u)/m, or on (0, (c/-d)^(1/m)) c^(-r) (c/-d)^u B(u, 1 - r)/m. */
-function byBeta(field: Field, { others }: Factors, v: string, s: Element, high: Expression | null): Element | null {
+function byBeta(field: Field, { others }: Factors, v: string, s: Element, high: Expression | null, ends: Convergence): Element | null {
   const [only] = others;
-  if (!only || others.length !== 1 || field.sign(s) !== 1) return null;
+  if (!only || others.length !== 1 || (ends.atZero && !isPositive(field, s))) return null;
   const flat = only.base.kind === 'power' && !dependsOn(only.base.exponent, v) ? { base: only.base.base, exponent: field.multiply(only.exponent, field.fromExpression(only.base.exponent)) } : only.base.kind === 'root' ? { base: only.base.radicand, exponent: field.divide(only.exponent, field.fromExpression(only.base.degree)) } : only;
   if (flat.base.kind !== 'sum') return null;
   const fixed = flat.base.terms.filter((t) => !dependsOn(t, v));
@@ -156,7 +166,7 @@ function byBeta(field: Field, { others }: Factors, v: string, s: Element, high: 
   const pi = field.fromExpression(build.constant('pi'));
   // B(u, 1 - u) = pi/sin(pi u), DLMF 5.5.3.
   const beta = (x: Element, y: Element): Element | null =>
-    field.sign(x) !== 1 || field.sign(y) !== 1
+    (ends.atZero && !isPositive(field, x)) || ((ends.atInfinity || high !== null) && !isPositive(field, y)) || (high === null && !isPositive(field, r) && ends.atInfinity)
       ? null
       : field.isZero(field.subtract(field.add(x, y), Q.ONE)) === 'yes'
         ? field.divide(pi, field.multiply(monomial.degree, field.call('sin', [field.multiply(pi, x)])))
@@ -166,4 +176,10 @@ function byBeta(field: Field, { others }: Factors, v: string, s: Element, high: 
   const ratio = field.negate(field.divide(c, d));
   if (field.sign(d) !== -1 || field.isZero(field.subtract(field.power(field.fromExpression(high), monomial.degree), ratio)) !== 'yes') return null;
   return scaled(beta(u, field.subtract(Q.ONE, r)), ratio);
+}
+
+/** Of a number that depends on the exponent's shift: at shift 0. */
+function isPositive(field: Field, a: Element): boolean {
+  const here = field.parameters(a).includes(SHIFT) ? field.fromExpression(substitute(field.toExpression(a), SHIFT, build.number(0))) : a;
+  return field.sign(here) === 1;
 }

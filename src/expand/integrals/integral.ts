@@ -3,8 +3,9 @@ import type { Element } from '../../algebra/types.ts';
 import { build, children, type Expression, type IntegralNode, Q, substitute } from '../../expression/index.ts';
 import { Declined } from '../../outcome.ts';
 import { add, type Context, eventualSign, exactOf, growth, integrate, isKnownZero, isZero, monomialOf, type Multi, multiply, orderSeries, Series, split, subtract, theta, unitMonomial, withExact } from '../../series/index.ts';
+import { openSide } from '../open-side.ts';
 import { type Evaluate, bind, type Session } from '../session.ts';
-import { completeIntegral } from './complete.ts';
+import { completeIntegral, SHIFT } from './complete.ts';
 import { byMoments } from './moments.ts';
 import { regularOn } from './monotone.ts';
 import { integrableAt, laplaceForm, watson } from './watson.ts';
@@ -55,11 +56,34 @@ function acrossLimits(s: Session, e: IntegralNode, v: string, lower: End, upper:
     const [start, end] = [fromZero(c, e.body, v, lower), fromZero(c, e.body, v, upper)];
     return start && end && add(c, total, field.subtract(end, start));
   }
+  const continued = pastPole(s, e.body, v, lower, upper, evaluate);
+  if (continued) return add(c, total, continued);
   // The lower end is fixed and the integrand regular from there on.
   if (!settled(below) || lower.moving !== null || from === null || upper.sign !== 1 || !outgrowsPowers(c, above)) return null;
   const low = e.lower as Expression;
   if (!regularOn({ variable: v, low, high: null, field }, e.body) || !integrableAt(s, e.body, v, low, evaluate)) return null;
   return add(c, total, orderSeries(c, unitMonomial));
+}
+
+/**
+ * The constant of an integral over (0, inf) that diverges at the moving end only: the finite part at e = 0 of the continued integral of v^e f (Hadamard; Wong, Asymptotic Approximations of Integrals, ch. 3,
+ * from memory), because a term c/v of f gives c/e there and c log v here.
+ */
+function pastPole(s: Session, body: Expression, v: string, lower: End, upper: End, evaluate: Evaluate): Element | null {
+  const c = s.context;
+  const { field } = c;
+  if (lower.limit === null || lower.limit instanceof Series || !isZero(c, lower.limit) || upper.limit !== null || upper.sign !== 1) return null;
+  if ((lower.moving === null) === (upper.moving === null)) return null;
+  if (lower.moving && eventualSign(c, lower.moving) !== 1) return null;
+  const shift = build.symbol(SHIFT);
+  // On the other side of 0 the integral has no value.
+  if (lower.moving) c.notes.sided = true;
+  const value = completeIntegral(field, build.product(build.power(build.symbol(v), shift), body), v, null, { atZero: lower.moving === null, atInfinity: upper.moving === null });
+  if (!value) return null;
+  const inner = openSide({ variable: shift, point: build.number(0), assumptions: [] }, 'right', c.budget);
+  const series = evaluate(inner.session, inner.fromVariable(field.toExpression(value)));
+  const { constant } = split(inner.context, series);
+  return constant instanceof Series ? null : field.fromExpression(inner.context.field.toExpression(constant));
 }
 
 /** The integral from 0 to where the end tends to. */

@@ -240,6 +240,8 @@ export interface ConstantAnswer {
   /** Plain notation. */
   readonly value: string;
   readonly filled: boolean;
+  /** Declared nowhere in the text: what the name means by common practice. */
+  readonly assumed?: true;
 }
 
 export interface ReadingAnswer {

@@ -19,8 +19,10 @@ const DEFAULT_LANGUAGE = 'c';
 /** Bits of an interval end that is no rational number; it is moved outward by its last one. */
 const END_BITS = 192;
 const DIGITS = 6;
-/** Most of the time that the count of terms of a truncated expansion may take: it is a comparison beside the answer. */
-const COMPARISON_MS = 1500;
+/** Most of the time that the count of terms of a truncated expansion may take: it is a comparison beside the answer. Several times what the slowest series that converge need. */
+const COMPARISON_MS = 6000;
+/** Share of the request's time that it may take; the answer itself is there already. */
+const COMPARISON_SHARE = 0.8;
 
 export async function askFit(request: FitRequest, tools: EngineTools, time: Budget): Promise<Outcome<FitAnswer>> {
   const source = await sourceOf(request, tools, 'values');
@@ -199,7 +201,7 @@ function taylorDegree(found: Fit, problem: FitProblem, request: FitRequest, time
   const inside = Q.compare(low, found.centre) <= 0 && Q.compare(found.centre, high) <= 0;
   const asked = request.point === undefined ? null : readExact(request.point);
   const point = asked?.ok ? asked.value : build.number(inside ? found.centre : Q.divide(Q.add(low, high), Q.rational(2)));
-  const short: Budget = budget(Math.min(COMPARISON_MS, Math.max(1, time.remaining())));
+  const short: Budget = budget(Math.min(COMPARISON_MS, Math.max(1, COMPARISON_SHARE * time.remaining())));
   const needed = termsNeeded(
     {
       expansionWithTerms: (terms) => expand({ function: problem.function, variable: build.symbol(problem.variable), point, side: 'both', assumptions: [], terms }, short),

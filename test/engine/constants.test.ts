@@ -60,3 +60,27 @@ describe('selections in code', () => {
     else expect(answer).toMatchObject({ ok: false, error: { code: 'unreadable' } });
   });
 });
+
+describe('pi in code that declares it nowhere', () => {
+  const fitted = (request: Readonly<Record<string, unknown>>): ReturnType<typeof ask> => ask({ ask: 'fit', language: 'c', interval: ['-1/4', '1/4'], degree: 5, ...request });
+  it('is the circle constant where numbers are needed, and the answer says so', async () => {
+    const answer = await fitted({ text: 'sin(PI*x)' });
+    if (!answer.ok || !('coefficients' in answer)) throw new Error('no fit');
+    expect(Number(answer.coefficients[0]?.value)).toBeCloseTo(Math.PI, 3);
+    expect(answer.assumptions[0]).toBe('PI is the circle constant 3.14159...: nothing in this text declares the name');
+    const guarded = await ask({ ask: 'guard', language: 'c', text: 'pi/2 - acos(x)', interval: ['-1/2', '1/2'] });
+    expect(guarded.ok ? guarded.assumptions[0] : guarded.error.message).toMatch(/^pi is the circle constant/);
+  });
+  it('stays a symbol where an expansion does not need its value, and where it is asked about', async () => {
+    expect((await expanded({ language: 'c', variable: 'x', text: 'sin(pi*x)' })).coefficients[0]).toBe('pi');
+    const alone = await fitted({ text: 'sin(pi)' });
+    expect(alone.ok).toBe(true);
+    expect((await fitted({ text: 'sin(pi*x)', variable: 'pi' })).ok).toBe(false);
+  });
+  it('is what the text declares it to be: a value, or a parameter without one', async () => {
+    const defined = 'static const double pi = 3.0;\ndouble f(double x) { return sin(pi*x); }';
+    const answer = await fitted(at(defined, 'sin(pi*x)'));
+    expect(answer.ok && 'coefficients' in answer ? Number(answer.coefficients[0]?.value) : 0).toBeCloseTo(3, 2);
+    expect((await fitted({ variable: 'x', ...at('double f(double x, double pi) { return sin(pi*x); }', 'sin(pi*x)') })).ok).toBe(false);
+  });
+});

@@ -39,6 +39,12 @@ describe('fit', () => {
     expect(Number(less.bound.approximation)).toBeGreaterThan(1e-6);
     expect(within.taylorDegree).toBeGreaterThanOrEqual(within.degree);
   });
+  it('counts the degree of a truncated expansion also where it converges slowly, and none where no number up to a thousand terms serves', async () => {
+    const asked = { text: 'atan(x)', interval: ['-1', '1'] };
+    // |atan 1 - sum of n terms| is about 1/(4 n) (alternating series).
+    expect((await fitAnswer({ ...asked, tolerance: 1e-2 })).taylorDegree).toBe(49);
+    expect((await fitAnswer({ ...asked, tolerance: 1e-6 })).taylorDegree).toBeNull();
+  });
   it('bounds what doubles see for truncated, economized and best polynomials, in this order', async () => {
     const errors: number[] = [];
     for (const method of ['taylor', 'economized', 'minimax']) {

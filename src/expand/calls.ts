@@ -7,6 +7,7 @@ import {
   add, divide, eventualSign, exactOf, exponential, growth, hyperbolic, imaginaryPart, inverse, type InverseFunction, isEvenLead, isRational, isRealMulti, leading, logarithm, mapConstants, type Multi, multiply, negate, noteSides, power, realPart,
   scaleBy, Series, sineCosine, split, subtract, withExact,
 } from '../series/index.ts';
+import { sineOfArctangent } from './arcsine.ts';
 import { evaluateDescribed, refusePole } from './described.ts';
 import type { Evaluate, Session } from './session.ts';
 
@@ -25,6 +26,9 @@ export function evaluateCall(s: Session, e: CallNode, evaluate: Evaluate): Multi
     if (description) refusePole(s, description, args as readonly Element[], evaluate);
     return c.field.call(e.function, args as readonly Element[]);
   }
+  const [tree] = e.args;
+  const sine = e.function === 'atan' && tree && first !== undefined ? sineOfArctangent(c, tree, first) : null;
+  if (sine) return evaluate(s, build.call('asin', sine));
   if (direct && first !== undefined && args.length === 1) return remembered(s, e.function, first, () => direct(s, first));
   const several = compound[e.function];
   if (several) return several(s, args);

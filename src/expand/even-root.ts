@@ -1,6 +1,7 @@
 /** Functions like cos(sqrt(x)): made of square roots of the local variable, and yet analytic. */
+import { createField } from '../algebra/index.ts';
 import { build, children, dependsOn, type Expression, mapChildren, Q, type Rational, substitute } from '../expression/index.ts';
-import { type Budget, Declined } from '../outcome.ts';
+import { type Budget, budget, Declined } from '../outcome.ts';
 import { evaluate } from './evaluate.ts';
 import type { ExpansionProblem } from './expansion.ts';
 import { openSide } from './open-side.ts';
@@ -12,14 +13,14 @@ const R = "r'";
  * Proof that f = F(r) with r the principal square root of t = x - a, F meromorphic at r = 0 and even: f is then a Laurent series in t, the same on both sides.
  * F is got by writing r^2 for t and r^p for principal powers t^(p/2); no step of its expansion may depend on r being positive, and F(r) = F(-r) must hold in the field.
  */
-export function isEvenInRoot(problem: ExpansionProblem, budget: Budget): boolean {
+export function isEvenInRoot(problem: ExpansionProblem, time: Budget): boolean {
   const { point, variable } = problem;
   if (typeof point !== 'object' || variable.kind !== 'symbol') return false;
   const shifted = point.kind === 'number' && Q.isZero(point.value) ? substitute(problem.function, variable.name, build.symbol(T)) : withOffset(problem.function, variable.name, point, build.symbol(T));
   const inRoot = rewritten(shifted, T, build.symbol(R));
   if (!dependsOn(inRoot, R) || !isMeromorphic(inRoot, R)) return false;
   try {
-    const side = openSide({ variable: build.symbol(R), point: build.number(0), assumptions: problem.assumptions }, 'right', budget);
+    const side = openSide({ variable: build.symbol(R), point: build.number(0), assumptions: problem.assumptions }, 'right', time);
     evaluate(side.session, side.fromVariable(inRoot));
     if (side.context.notes.sided || side.context.notes.onReal) return false;
     const { field } = side.context;
@@ -52,6 +53,8 @@ function withOffset(e: Expression, x: string, a: Expression, t: Expression): Exp
 function rewritten(e: Expression, t: string, r: Expression): Expression {
   const isT = (node: Expression | undefined): boolean => node?.kind === 'symbol' && node.name === t;
   const visit = (node: Expression): Expression => {
+    const arc = node.kind === 'call' && node.args[0] ? arcInRoot(node.function, node.args[0], t, r) : null;
+    if (arc) return arc;
     if (isT(node)) return build.power(r, 2);
     if (node.kind === 'call' && node.function === 'sqrt' && isT(node.args[0])) return r;
     if (node.kind === 'root' && isT(node.radicand) && node.degree.kind === 'number' && node.degree.value.num === 2n && node.degree.value.den === 1n) return r;
@@ -59,6 +62,39 @@ function rewritten(e: Expression, t: string, r: Expression): Expression {
     return mapChildren(node, visit);
   };
   return visit(e);
+}
+
+/**
+ * acos(1 - 2c r^2) = 2 asin(sqrt(c) r), acosh(1 + 2c r^2) = 2 asinh(sqrt(c) r), and their complements at -1 and for asin (DLMF 4.23.19, 4.24.13 and 4.38.15, from memory).
+ * For c < 0 the value beyond the branch point is right up to the sign of the root, which an even function does not see.
+ */
+function arcInRoot(id: string, argument: Expression, t: string, r: Expression): Expression | null {
+  if (id !== 'acos' && id !== 'asin' && id !== 'acosh') return null;
+  try {
+    return arcOfLinear(id, argument, t, r);
+  } catch (error) {
+    if (error instanceof Declined && error.failure.code !== 'over-budget') return null;
+    throw error;
+  }
+}
+
+function arcOfLinear(id: 'acos' | 'asin' | 'acosh', argument: Expression, t: string, r: Expression): Expression | null {
+  const field = createField([], budget(1000));
+  const symbol = field.fromExpression(build.symbol(t));
+  const speed = (end: 1 | -1): Expression | null => {
+    const half = field.multiply(Q.HALF, field.subtract(Q.ONE, field.multiply(Q.rational(end), field.fromExpression(argument))));
+    const c = field.divide(half, symbol);
+    return field.parameters(c).includes(t) || field.isZero(c) !== 'no' ? null : field.toExpression(c);
+  };
+  const [right, left] = [speed(1), speed(-1)];
+  const c = right ?? left;
+  if (!c) return null;
+  if (id === 'acosh') return right ? build.product(build.number(2), build.call('asinh', build.product(build.squareRoot(build.negation(right)), r))) : null;
+  const angle = build.product(build.number(2), build.call('asin', build.product(build.squareRoot(c), r)));
+  const pi = build.constant('pi');
+  if (id === 'acos') return right ? angle : build.difference(pi, angle);
+  const quarter = build.quotient(pi, build.number(2));
+  return right ? build.difference(quarter, angle) : build.difference(angle, quarter);
 }
 
 /** The tree at -r, with the parity of Bessel functions of whole order used (DLMF 10.4.1, 10.27.1, from memory). */

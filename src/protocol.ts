@@ -155,7 +155,8 @@ export interface NeededAnswer {
   readonly reason?: string;
   readonly estimate?: number;
   readonly best?: { readonly terms: number; readonly bound: string };
-  readonly reach?: { readonly distance: string; readonly closed: boolean };
+  /** `closed`: at the distance itself the tolerance is kept (true) or cannot be (false), each proven; absent where only every smaller distance is decided. */
+  readonly reach?: { readonly distance: string; readonly closed?: boolean };
   /** Degree of a fitted polynomial that would keep the tolerance, where no truncated expansion does. */
   readonly fittedDegree?: number;
 }

@@ -213,3 +213,13 @@ export function hypergeometricAtZero(args: readonly Expression[], reach: Ball, p
   const size = real.isPositive(gap) ? real.divide(real.absolute(real.fromRational(last, bits)), gap, bits) : null;
   return size && { coefficients, remainder: real.union(real.negate(real.upperEnd(size)), real.upperEnd(size), bits) };
 }
+
+/** Li_s at zero for whole s >= 0: sum x^k/k^s (DLMF 25.12.10), the coefficients after the K-th none greater than K^-s. Null where the reach is not below 1. */
+export function polylogAtZero(args: readonly Expression[], reach: Ball, precision: number, length: number): RealSeries | null {
+  const order = args[0] && rationalOf(args[0]);
+  if (!order || order.den !== 1n || order.num < 0n || order.num > 200n) return null;
+  const coefficients = Array.from({ length }, (_, k) => (k === 0 ? real.ZERO : real.fromRational({ num: 1n, den: BigInt(k) ** order.num }, precision + 8)));
+  const gap = real.lowerEnd(real.subtract(real.ONE, real.upperEnd(reach), MAJORANT_BITS));
+  const size = real.isPositive(gap) ? real.divide(real.fromRational({ num: 1n, den: BigInt(length) ** order.num }, MAJORANT_BITS), gap, MAJORANT_BITS) : null;
+  return size && { coefficients, remainder: real.union(real.negate(real.upperEnd(size)), real.upperEnd(size), MAJORANT_BITS) };
+}

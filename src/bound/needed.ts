@@ -2,10 +2,10 @@
 import { build, type Assumption, type Expression, freeSymbols, Q, type Rational } from '../expression/index.ts';
 import { type Expansion, prefix } from '../expand/index.ts';
 import { budget, type Budget, Declined, success } from '../outcome.ts';
-import { type Ball, encloseReal, real } from '../rigorous/index.ts';
+import { type Ball, encloseReal, rationalOf, real } from '../rigorous/index.ts';
 import { describe } from '../functions/index.ts';
 import { fittedDegreeOf } from './fitted.ts';
-import { sumOf } from './local.ts';
+import { isPowerSum, sumOf } from './local.ts';
 import { ballNumbers } from './numbers.ts';
 import { remainderAt } from './pieces.ts';
 import { compareReal } from './region.ts';
@@ -90,7 +90,9 @@ export function termsNeededFor(problem: NeededProblem, tolerance: Rational): Ter
   let best: { terms: number; bound: RemainderBound } | null = null;
   let smallest: { terms: number; size: number } = { terms: 1, size: Infinity };
   let refuted = true;
-  let unbounded: RemainderBound | null = null;
+  let unbounded: { readonly result: RemainderBound; readonly count: number } | null = null;
+  /** Numbers of terms that are neither proven to serve nor refuted. */
+  const undecided: number[] = [];
   const sizes: number[] = [];
   const convergence = convergenceOn(problem, expansionOf(1));
   for (let n = 1; n <= MOST_TERMS; n += 1) {
@@ -101,13 +103,15 @@ export function termsNeededFor(problem: NeededProblem, tolerance: Rational): Ter
     if (quick === null || Q.compare(quick, tolerance) <= 0) {
       const result = decided(boundOf, n, tolerance);
       if (result.upperRational === null) {
-        // Poles at the point go away with more terms; others never do.
-        unbounded = result;
-        if (!mayGoAway(expansion, result)) return { terms: null, reason: reasonOfPlace(result) };
+        if (isSingularForEverySum(expansion, result, problem.measure)) return { terms: null, reason: SINGULAR };
+        unbounded = { result, count: (unbounded?.count ?? 0) + 1 };
+        // Poles at the point go away with as many terms as their order; elsewhere a few more terms are tried.
+        if (!poleAtPoint(expansion) && unbounded.count >= MOST_UNBOUNDED) return { terms: null, reason: unboundedUpTo(n, problem.measure, undecided) };
         continue;
       }
       if (Q.compare(result.upperRational, tolerance) <= 0) return { terms: n, expansion, bound: result, minimal: n === 1 || refuted };
       refuted = result.lowerRational !== null && Q.compare(result.lowerRational, tolerance) > 0;
+      if (!refuted) undecided.push(n);
       size = logarithm(result.upperRational);
       if (best === null || (best.bound.upperRational !== null && Q.compare(result.upperRational, best.bound.upperRational) < 0)) best = { terms: n, bound: result };
     } else refuted = true;
@@ -117,8 +121,7 @@ export function termsNeededFor(problem: NeededProblem, tolerance: Rational): Ter
     // Inside the disc of convergence the error falls in the end, however it grows at first.
     const limit = convergence === 'inside' ? Infinity : (convergence === 'unknown' ? 40 : expansion.divergent ? 4 : 6) + Math.floor(smallest.terms / (expansion.divergent ? 3 : 2));
     if (n - smallest.terms > limit) {
-      const bounded = best ?? { terms: smallest.terms, bound: boundOf(smallest.terms) };
-      return noNumber(problem, expansionOf, expansion, tolerance, bounded, n, convergence);
+      return noNumber(problem, expansionOf, expansion, tolerance, bestOf(best, smallest.terms, boundOf), n, convergence, undecided);
     }
     if (n >= 60 && n % 30 === 0) {
       const more = furtherTerms(n, sizes, size - logarithm(tolerance));
@@ -126,9 +129,25 @@ export function termsNeededFor(problem: NeededProblem, tolerance: Rational): Ter
     }
   }
   if (smallest.terms >= MOST_TERMS - 5) return { terms: null, reason: 'slow', estimate: 2 * MOST_TERMS };
-  if (unbounded) return { terms: null, reason: reasonOfPlace(unbounded) };
-  const last = best ?? { terms: smallest.terms, bound: boundOf(smallest.terms) };
-  return { terms: null, reason: 'No number of terms up to 1000 keeps the tolerance on this interval.', best: { terms: last.terms, bound: last.bound.value ?? '' } };
+  const tried = sizes.length - 1;
+  if (unbounded && tried < 1) return { terms: null, reason: unboundedUpTo(unbounded.count, problem.measure, undecided) };
+  const last = bestOf(best, smallest.terms, boundOf);
+  return { terms: null, reason: `${refutedUpTo(tried, undecided)} For more terms nothing is proved.`, ...(last.bound.value === null ? {} : { best: { terms: last.terms, bound: last.bound.value } }) };
+}
+
+/** The smaller of the bounds of two sums: of the best one bounded on the whole interval, and of the one whose error at an end is least. */
+function bestOf(best: { terms: number; bound: RemainderBound } | null, other: number, boundOf: (n: number) => RemainderBound): { terms: number; bound: RemainderBound } {
+  if (best?.terms === other) return best;
+  const bound = boundOf(other);
+  if (best?.bound.upperRational && (bound.upperRational === null || Q.compare(best.bound.upperRational, bound.upperRational) <= 0)) return best;
+  return { terms: other, bound };
+}
+
+/** What is shown of the numbers of terms that were tried. */
+function refutedUpTo(tried: number, undecided: readonly number[]): string {
+  if (undecided.length === 0) return `Every number of terms up to ${tried} is refuted by a proven lower bound of its error.`;
+  const list = undecided.length > 6 ? `${undecided.slice(0, 6).join(', ')}, ...` : undecided.join(', ');
+  return `Every number of terms up to ${tried} is refuted by a proven lower bound of its error, but for ${list}: of these neither a bound within the tolerance nor a refutation was found.`;
 }
 
 /** A proven lower bound of the error by its values at the finite ends of the interval; null where they are not defined. */
@@ -156,11 +175,25 @@ function isLeft(x: Ball, point: Expression, precision: number): boolean {
   return p !== null && real.compare(x, p) === -1;
 }
 
-const reasonOfPlace = (result: RemainderBound): string => (result.place ? 'The function has a singularity in the interval that no sum removes.' : 'The remainder is unbounded on the interval.');
-const mayGoAway = (expansion: Expansion, result: RemainderBound): boolean => {
+const SINGULAR = 'The function has a singularity in the interval that no sum removes.';
+const MOST_UNBOUNDED = 6;
+const unboundedUpTo = (n: number, measure: Measure, undecided: readonly number[]): string =>
+  undecided.length > 0
+    ? refutedUpTo(n, undecided)
+    : `${measure === 'relative' ? 'The relative error' : 'The remainder'} is unbounded on the interval for every number of terms up to ${n}${measure === 'relative' ? ' (the function has a zero there that the sum has not, or the sum outgrows it)' : ''}. For more terms nothing is proved.`;
+
+/** f itself is unbounded near a place where every sum of this expansion is finite: then no number of terms serves. */
+function isSingularForEverySum(expansion: Expansion, result: RemainderBound, measure: Measure): boolean {
+  if (measure === 'relative' || !result.place || !isPowerSum(expansion)) return false;
+  const place = encloseReal(result.place, new Map(), 96, describe);
+  if (place === null) return false;
+  if (expansion.point === 'inf' || expansion.point === '-inf') return !real.containsZero(place);
+  const point = encloseReal(expansion.point, new Map(), 96, describe);
+  return point !== null && !real.overlaps(place, point);
+}
+const poleAtPoint = (expansion: Expansion): boolean => {
   const power = expansion.remainder?.power;
-  const negative = power !== undefined && power !== null && ((power.kind === 'number' && power.value.num < 0n) || power.kind === 'negation');
-  return negative && result.place !== undefined;
+  return power !== undefined && power !== null && ((power.kind === 'number' && power.value.num < 0n) || power.kind === 'negation');
 };
 
 /** Number of further terms until the error falls by `missing` (in logarithms), from log error = a - b n - c log n through the last three marks; null where it does not fall. */
@@ -219,17 +252,28 @@ function convergenceOn(problem: NeededProblem, expansion: Expansion): Convergenc
 }
 const isInfinite = (e: Expression): boolean => (e.kind === 'constant' && e.name === 'infinity') || (e.kind === 'negation' && isInfinite(e.operand));
 
-function noNumber(problem: NeededProblem, expansionOf: (n: number) => Expansion, expansion: Expansion, tolerance: Rational, best: { terms: number; bound: RemainderBound }, tried: number, convergence: Convergence): TermsNeeded {
+/**
+ * Why no number of terms was found, and no more than is proved. Beyond the radius of convergence the terms a_n t^n are unbounded (Cauchy-Hadamard). A term is the difference of two neighbouring
+ * sums, so that |a_n t^n| <= E_n + E_(n-1): the errors E_n are unbounded too, though a single one among them may be small.
+ */
+function noNumber(problem: NeededProblem, expansionOf: (n: number) => Expansion, expansion: Expansion, tolerance: Rational, best: { terms: number; bound: RemainderBound }, tried: number, convergence: Convergence, undecided: readonly number[]): TermsNeeded {
   const radius = expansion.radius?.value;
-  const reason =
-    convergence === 'divergent'
-      ? 'The series diverges: beyond its best number of terms the error grows.'
+  const shownSoFar = refutedUpTo(tried, undecided);
+  const unboundedTerms = convergence === 'beyond' && problem.measure === 'absolute' && isPowerSeries(expansion);
+  const more = unboundedTerms
+    ? `The interval reaches beyond the radius of convergence${radius ? ` (nearest singularity at distance ${shown(radius)})` : ''}: there the terms, and with them the errors of longer sums, are unbounded; that each longer sum fails is not proved.`
+    : convergence === 'divergent'
+      ? 'The series diverges; for more terms nothing is proved.'
       : convergence === 'beyond'
-        ? `The interval reaches beyond the radius of convergence${radius ? ` (nearest singularity at distance ${shown(radius)})` : ''}: there the terms grow without bound. Every number of terms up to ${tried} is refuted by a value, and more terms make the error larger.`
-        : `No number of terms up to ${tried} keeps the tolerance, and the radius of convergence is not known.`;
+        ? `The interval reaches beyond the radius of convergence${radius ? ` (nearest singularity at distance ${shown(radius)})` : ''}; for more terms nothing is proved.`
+        : 'The radius of convergence is not known; for more terms nothing is proved.';
   const reach = reachOf(problem, expansionOf, expansion, tolerance, best.terms, convergence);
-  return { terms: null, reason, best: { terms: best.terms, bound: best.bound.value ?? '' }, ...(reach ? { reach } : {}), ...fittedAnswer(problem, expansion, tolerance) };
+  const reachAnswer = reach ? { reach } : {};
+  if (best.bound.value === null) return { terms: null, reason: isSingularForEverySum(expansion, best.bound, problem.measure) ? SINGULAR : `${shownSoFar} ${more}`, ...reachAnswer };
+  return { terms: null, reason: `${shownSoFar} ${more}`, best: { terms: best.terms, bound: best.bound.value }, ...reachAnswer, ...fittedAnswer(problem, expansion, tolerance) };
 }
+/** Whole powers without logarithms: a Taylor or Laurent series. */
+const isPowerSeries = (expansion: Expansion): boolean => isPowerSum(expansion) && expansion.terms.every((term) => term.log === 0 && rationalOf(term.power)?.den === 1n);
 const shown = (e: Expression): string => {
   const value = encloseReal(e, new Map(), 64, describe);
   return value === null ? '?' : real.toDecimalDown(value, 7);
@@ -273,21 +317,39 @@ function reachOf(problem: NeededProblem, expansionOf: (n: number) => Expansion, 
     if (!(error instanceof Declined) || problem.budget.remaining() <= 0) throw error;
   }
   const radius = convergence === 'beyond' && expansion.radius?.value ? encloseReal(expansion.radius.value, new Map(), 96, describe) : null;
+  const found: Reach | null = best === null ? null : { distance: best.distance, closed: true };
   // A sum of few terms may serve beyond the disc where the tolerance is wide.
-  if (radius === null || (best !== null && Q.compare(best.size, real.upper(radius)) > 0)) return best === null ? null : { distance: best.distance, closed: true };
-  return { distance: real.toDecimalDown(radius, 12), closed: atRadius(limited, expansionOf, expansion, tolerance) };
+  if (radius === null || (best !== null && Q.compare(best.size, real.upper(radius)) > 0)) return found;
+  // Within the disc the sums converge uniformly on every closed interval; their relative error does where f has no other zero.
+  if (problem.measure === 'relative' && !isBoundedWithin(limited, expansionOf(1))) return found;
+  const closed = atRadius(limited, expansionOf, expansion, tolerance);
+  return { distance: real.toDecimalDown(radius, 12), ...(closed === null ? {} : { closed }) };
 }
 
-/** Whether some number of terms keeps the tolerance as far as the radius itself, the end included. */
-function atRadius(problem: NeededProblem, expansionOf: (n: number) => Expansion, expansion: Expansion, tolerance: Rational): boolean {
+/** The relative error is proven finite as far as the radius. */
+function isBoundedWithin(problem: NeededProblem, expansion: Expansion): boolean {
   const radius = expansion.radius?.value;
   if (!radius) return false;
   try {
-    const interval = within(expansion, radius, problem.interval);
-    const found = termsNeededFor({ ...problem, interval, expansionWithTerms: (n) => success(expansionOf(n)) }, tolerance);
-    return found.terms !== null || found.reason === 'slow';
+    return bound({ expansion, interval: within(expansion, radius, problem.interval), measure: problem.measure, assumptions: problem.assumptions, budget: problem.budget }).upperRational !== null;
   } catch (error) {
     if (error instanceof Declined) return false;
+    throw error;
+  }
+}
+
+/** Whether some number of terms keeps the tolerance as far as the radius itself, the end included: proven, disproved, or null where neither. */
+function atRadius(problem: NeededProblem, expansionOf: (n: number) => Expansion, expansion: Expansion, tolerance: Rational): boolean | null {
+  const radius = expansion.radius?.value;
+  if (!radius) return null;
+  try {
+    const interval = within(expansion, radius, problem.interval);
+    const first = expansionOf(1);
+    const start = bound({ expansion: first, interval, measure: problem.measure, assumptions: problem.assumptions, budget: problem.budget });
+    if (start.upperRational === null && isSingularForEverySum(first, start, problem.measure)) return false;
+    return termsNeededFor({ ...problem, interval, expansionWithTerms: (n) => success(expansionOf(n)) }, tolerance).terms === null ? null : true;
+  } catch (error) {
+    if (error instanceof Declined) return null;
     throw error;
   }
 }

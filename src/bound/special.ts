@@ -8,8 +8,10 @@ import { build, type Expression, structureKey } from '../expression/index.ts';
 import { describe } from '../functions/index.ts';
 import { type Ball, complex, type ComplexBall, enclose, interval, type Model, type ModelArithmetic, real } from '../rigorous/index.ts';
 import { polygammaSeries } from './gammaSeries.ts';
-import { equationSeries, hasEquation, hypergeometricAtZero, type RealSeries } from './holonomic.ts';
+import { equationSeries, hasEquation, hypergeometricAtZero, polylogAtZero, type RealSeries } from './holonomic.ts';
+import { hasRecurrence, recurrenceSeries } from './nonlinear.ts';
 import type { Numbers } from './numbers.ts';
+import { zetaSeries } from './zetaSeries.ts';
 
 /** Where f is analytic in its varying argument: everywhere, off (-inf, end], or off [end, inf). */
 type Domain = { readonly kind: 'entire' } | { readonly kind: 'offLeft'; readonly end: number } | { readonly kind: 'offRight'; readonly end: number } | { readonly kind: 'offPoint'; readonly end: number };
@@ -109,6 +111,8 @@ export function specialModel<T>(id: string, args: readonly Expression[], models:
   if (u === null) return null;
   const byEquation = equationModel(id, args, index, argument, u, n, m);
   if (byEquation !== null) return byEquation;
+  const byRecurrence = id === 'zeta' ? zetaModel(u, n, m) : hasRecurrence(id) && index === args.length - 1 ? recurrenceModel(id, args, u, n, m) : null;
+  if (byRecurrence !== null) return byRecurrence;
   const domain = domainOf(id, args, index);
   if (domain === null || !describe(id)?.enclose) return null;
   // With an equation whose only singular point is that end, a shorter piece serves better than values on a circle.
@@ -154,13 +158,13 @@ function equationModel<T>(id: string, args: readonly Expression[], index: number
   const { r } = n;
   const precision = n.precision <= 53 ? 64 : n.precision;
   const atZero = argument.valuation > 0;
-  if (atZero && id !== 'hypergeometric') return null;
+  if (atZero && id !== 'hypergeometric' && id !== 'polylog') return null;
   const offset = atZero ? argument : withoutConstant(m, u);
   const spread = m.rangeOf(offset);
   const [centre, reach] = [n.toBall(u.coefficients[0] ?? r.zero), spread && n.toBall(r.upperEnd(r.absolute(spread)))];
   if (centre === null || reach === null) return null;
   let series: RealSeries | null;
-  if (atZero) series = hypergeometricAtZero(args, reach, precision, Math.max(2, Math.ceil(m.length / argument.valuation) + 1));
+  if (atZero) series = (id === 'polylog' ? polylogAtZero : hypergeometricAtZero)(args, reach, precision, Math.max(2, Math.ceil(m.length / argument.valuation) + 1));
   else {
     const environment = new Map<string, Ball>();
     for (const [name, set] of n.parameters) {
@@ -172,6 +176,37 @@ function equationModel<T>(id: string, args: readonly Expression[], index: number
     series = equationSeries(id, args, index, centre, reach, environment, `${id}|${index}|${constants.join(';')}|${values.join(';')}`, precision, m.length);
   }
   return series && hornerWithTail(series.coefficients.map((c) => n.fromBall(c)), n.fromBall(series.remainder), offset, n, m);
+}
+
+/** zeta(u) = 1/(u - 1) + the Taylor series of an entire function. */
+function zetaModel<T>(u: Model<T>, n: Numbers<T>, m: ModelArithmetic<T>): Model<T> | null {
+  const { r } = n;
+  const offset = withoutConstant(m, u);
+  const spread = m.rangeOf(offset);
+  const [centre, reach] = [n.toBall(u.coefficients[0] ?? r.zero), spread && n.toBall(r.upperEnd(r.absolute(spread)))];
+  const series = centre && reach && zetaSeries(centre, reach, n.precision <= 53 ? 64 : n.precision, m.length);
+  const pole = series && m.divide(m.constant(r.one), m.subtract(u, m.constant(r.one)));
+  const regular = pole && hornerWithTail(series.coefficients.map((c) => n.fromBall(c)), n.fromBall(series.remainder), offset, n, m);
+  return regular && m.add(pole, regular);
+}
+
+/** By the function's own nonlinear differential equation. */
+function recurrenceModel<T>(id: string, args: readonly Expression[], u: Model<T>, n: Numbers<T>, m: ModelArithmetic<T>): Model<T> | null {
+  const { r } = n;
+  const precision = n.precision <= 53 ? 64 : n.precision;
+  const offset = withoutConstant(m, u);
+  const spread = m.rangeOf(offset);
+  const [centre, reach] = [n.toBall(u.coefficients[0] ?? r.zero), spread && n.toBall(r.upperEnd(r.absolute(spread)))];
+  const hull = spread && n.toBall(r.add(u.coefficients[0] ?? r.zero, r.union(r.zero, spread)));
+  const others: Ball[] = [];
+  for (const arg of args.slice(0, -1)) {
+    const value = n.value(arg);
+    const ball = value === null ? null : n.toBall(value);
+    if (ball === null) return null;
+    others.push(ball);
+  }
+  const series = centre && reach && hull && recurrenceSeries(id, others, centre, hull, reach, precision, m.length);
+  return series ? hornerWithTail(series.coefficients.map((c) => n.fromBall(c)), n.fromBall(series.remainder), offset, n, m) : null;
 }
 
 function withoutConstant<T>(m: ModelArithmetic<T>, u: Model<T>): Model<T> {
@@ -214,7 +249,8 @@ function computeSeries(id: string, parameters: readonly ComplexBall[], index: nu
   const bound = majorant(id, parameters, index, centre, radius) ?? maximumOnCircle(at, centre, radius);
   if (bound === null) return null;
   // M points on half the radius; f is real on the real axis, so the lower half mirrors the upper.
-  const half = precision <= 64 ? 28 : Math.ceil((precision + 12) / 2);
+  // More points than coefficients: those of M higher powers are then all that is added to one.
+  const half = Math.max(precision <= 64 ? 28 : Math.ceil((precision + 12) / 2), Math.ceil((length + 1) / 2));
   const M = 2 * half;
   const work = precision + 16;
   const c = complex.arithmetic(work);

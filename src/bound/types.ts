@@ -59,7 +59,8 @@ export interface TermsNeeded {
 /** `distance` is a decimal rounded down, in the variable's unit (|x - a|, or 1/|x| at infinity); `inf` where there is no limit. */
 export interface Reach {
   readonly distance: string;
-  readonly closed: boolean;
+  /** Whether the tolerance is kept at the distance itself (true) or only at every smaller one (false), each proven; absent where it is only known for every smaller one. */
+  readonly closed?: boolean;
 }
 
 export interface ValueAt {

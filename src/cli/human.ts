@@ -8,7 +8,7 @@ function needed(answer: NeededAnswer): string {
     const bound = answer.bound === undefined ? '' : `, bound ${answer.bound}`;
     return `${answer.terms} terms${answer.order === undefined ? '' : ` (order ${answer.order})`}${bound}${answer.minimal ? '; one fewer is not enough (proven)' : ''}`;
   }
-  const reach = answer.reach ? `; within distance ${answer.reach.distance} of the point${answer.reach.closed ? '' : ' (not reached)'} it can` : '';
+  const reach = answer.reach ? `; within distance ${answer.reach.distance} of the point${answer.reach.closed === false ? ' (not reached)' : answer.reach.closed === undefined ? ' (at it: not decided)' : ''} it can` : '';
   const best = answer.best ? `; best: ${answer.best.terms} terms, bound ${answer.best.bound}` : '';
   return `no number of terms keeps it: ${answer.reason ?? 'not reached'}${best}${reach}`;
 }

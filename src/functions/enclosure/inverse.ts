@@ -35,7 +35,11 @@ export function inverseOfIncreasing(kit: Kit<Ball>, f: (kit: Kit<Ball>, y: Ball)
     if (sign === -1) low = middle;
     else if (sign === 1) high = middle;
     else if (search !== kit) search = kit;
-    else break;
+    else {
+      const value = f(kit, middle);
+      if (value?.rad === 0n && real.compare(value, target) === 0) return middle;
+      break;
+    }
   }
   let bracket = real.fromEnds(low, high, precision);
   // Newton on the bracket: y = m - (f(m) - x)/f'(Y) holds for the root of every x in the ball.

@@ -112,5 +112,7 @@ export function applyKernel(ctx: Context, name: string, derivatives: readonly nu
 export const minus = (ctx: Context, a: Element, b: Element): Element => addElements(ctx.table, a, negateElement(b));
 
 export const undecided = (message: string): Declined => new Declined('undecided', message);
+/** What is proven to have no value. */
+export const valueless = (message: string): Declined => new Declined('no-expansion', message);
 export const rationalOf = (a: Element): Rational | null => ('num' in a ? a : null);
 export const isZeroRational = (a: Element): boolean => 'num' in a && a.num === 0n;

@@ -1,6 +1,6 @@
 /** Elementary functions of field elements: special values, parity, shifts by quarter turns, compositions with inverses. */
 import { Q, type Rational } from '../expression/index.ts';
-import { callKernel, constantKernel, imaginaryKernel, isZeroRational, kernelElement, rationalOf, undecided, type Context } from './context.ts';
+import { callKernel, constantKernel, imaginaryKernel, isZeroRational, kernelElement, rationalOf, valueless, type Context } from './context.ts';
 import type { Kernel } from './kernel.ts';
 import { absolute, divideElements, exponential, logarithm, rationalPower } from './powers.ts';
 import { addElements, isQuotient, multiplyElements, negateElement, scaleElement } from './quotient.ts';
@@ -244,7 +244,7 @@ function arcTangent(ctx: Context, a: Element): Element {
   if (isZeroRational(a)) return Q.ZERO;
   const r = rationalOf(a);
   if (r && Q.isOne(r)) return scaleElement(pi(ctx), Q.rational(1, 4));
-  if (isZeroRational(plus(ctx, Q.ONE, squared(ctx, a)))) throw undecided('The inverse tangent has no value at i and -i; choose another point or parameter.');
+  if (isZeroRational(plus(ctx, Q.ONE, squared(ctx, a)))) throw valueless('The inverse tangent has no value at i and -i; choose another point or parameter.');
   if (isNumericAlgebraic(ctx, a) && isRealSet(ctx.signs.of(a))) {
     const tangent = (q: Rational): Element => divideElements(ctx, sineOfPi(ctx, q), cosineOfPi(ctx, q));
     const angle = angleWith(ctx, a, tangent);

@@ -1,6 +1,6 @@
 /** Powers, exponentials and logarithms with principal branches. */
 import { Q, type Rational } from '../expression/index.ts';
-import { constantKernel, expKernel, imaginaryKernel, isZeroRational, kernelElement, logKernel, minus, powerKernel, rationalOf, undecided, withSquaresJoined, type Context } from './context.ts';
+import { constantKernel, expKernel, imaginaryKernel, isZeroRational, kernelElement, logKernel, minus, powerKernel, rationalOf, undecided, valueless, withSquaresJoined, type Context } from './context.ts';
 import { compareExponents, exponentFromRational, isWhole, multiplyExponents, type Exponent } from './exponent.ts';
 import { denestedCubeRoot, denestedSquareRoot, dependentSquareRoot } from './denest.ts';
 import { factorInteger } from './integers.ts';
@@ -79,7 +79,7 @@ export function rationalPower(ctx: Context, base: Element, r: Rational): Element
   }
   if (isZeroRational(a)) {
     if (r.num > 0n) return Q.ZERO;
-    throw undecided('A negative power of zero has no value; choose another point or parameter.');
+    throw valueless('A negative power of zero has no value; choose another point or parameter.');
   }
   const exponent = exponentFromRational(r);
   const parts = partsOf(a);
@@ -197,11 +197,12 @@ function openPower(ctx: Context, base: Element, r: Rational, exponent: Exponent)
   return kernelElement(ctx, powerKernel(ctx, base, Q.ONE), exponent);
 }
 
-export function requireNonZero(ctx: Context, a: Element): void {
+/** Rejects zero ('no-expansion') and what may be zero ('undecided'). */
+export function requireNonZero(ctx: Context, a: Element, what: 'divisor' | 'argument of a logarithm' = 'divisor'): void {
   const zero = ctx.isZero(a);
   if (zero === 'no') return;
-  if (zero === 'yes') throw undecided('A division by zero has no value; choose another point or parameter.');
-  throw undecided('A divisor could not be shown to be non-zero; state an assumption that excludes zero.');
+  if (zero === 'yes') throw valueless(`${what === 'divisor' ? 'A division by zero' : 'The logarithm of zero'} has no value; choose another point or parameter.`);
+  throw undecided(`${what === 'divisor' ? 'A divisor' : 'The argument of a logarithm'} could not be shown to be non-zero; state an assumption that excludes zero.`);
 }
 
 export function divideElements(ctx: Context, a: Element, b: Element): Element {
@@ -310,7 +311,7 @@ export function logarithm(ctx: Context, a: Element): Element {
 }
 
 function splitLogarithm(ctx: Context, a: Element): Element {
-  requireNonZero(ctx, a);
+  requireNonZero(ctx, a, 'argument of a logarithm');
   const parts = partsOf(a);
   let result = logOfRational(ctx, parts.content);
   let negative = parts.content.num < 0n;

@@ -106,12 +106,12 @@ describe('declined', () => {
     return o.ok ? null : o.error;
   };
   it('division by zero, also a hidden one', () => {
-    expect(failure(() => f.divide(f.rational(1), f.rational(0)))?.code).toBe('undecided');
+    expect(failure(() => f.divide(f.rational(1), f.rational(0)))?.code).toBe('no-expansion');
     const hidden = f.fromExpression(b.difference(call('sin', b.product(n(2), a)), b.product(n(2), call('sin', a), call('cos', a))));
-    expect(failure(() => f.divide(f.rational(1), hidden))?.code).toBe('undecided');
-    expect(failure(() => f.log(f.rational(0)))?.code).toBe('undecided');
-    expect(failure(() => f.call('atan', [f.i]))?.code).toBe('undecided');
-    expect(failure(() => f.call('atanh', [f.rational(1)]))?.code).toBe('undecided');
+    expect(failure(() => f.divide(f.rational(1), hidden))?.code).toBe('no-expansion');
+    expect(failure(() => f.log(f.rational(0)))?.code).toBe('no-expansion');
+    expect(failure(() => f.call('atan', [f.i]))?.code).toBe('no-expansion');
+    expect(failure(() => f.call('atanh', [f.rational(1)]))?.code).toBe('no-expansion');
   });
   it('infinity, order terms and deep nesting', () => {
     expect(failure(() => f.fromExpression(b.constant('infinity')))?.code).toBe('bad-request');

@@ -259,11 +259,23 @@ function exponentialOfLarge(c: Context, large: Multi): Multi {
     noteSides(c, isEvenLead({ exponent: factor, coefficient: Q.ONE }, found.element));
     return multiply(c, monomial(c, found.element, factor), exponential(c, rest));
   }
+  // Powers of the local variable stand beside the new element, not inside it: e^(n + log n) is n e^n.
+  const power = large instanceof Series && large.element.kind === 'local' ? atExponentZero(c, large) : null;
+  if (power) return multiply(c, exponentialOfLarge(c, mapConstants(c, subtract(c, large, power), (e) => e)), exponential(c, power));
   const sign = decideSign(c, lead.constant);
   if (sign === 'complex' || sign === 0) throw new Error('a large part without a sign');
   const element = insertExponential(c, sign === 1 ? large : negate(c, large), found.position);
   c.notes.sided = true;
   return monomial(c, element, Q.rational(-sign));
+}
+
+/** The term of a finite series with the element to the power 0, behind others; null where there is none. */
+function atExponentZero(c: Context, large: Series): Multi | null {
+  for (let k = 0; ; k += 1) {
+    const term = large.stream.at(k);
+    if (!term) return null;
+    if (signOfExponent(c, term.exponent) === 0) return k > 0 && !isZero(c, term.coefficient) ? term.coefficient : null;
+  }
 }
 
 /** e^(a + i b) = e^a e^(i b): an unbounded b oscillates. */

@@ -1,6 +1,7 @@
 /** Published expansions, exact coefficients and remainders. All quoted from memory: DLMF 4.6, 4.19, 4.24, 4.33, 4.38, 4.39; Abramowitz & Stegun (A&S) 3.6, 4.1, 4.3, 4.5, 4.6; others where named. */
 import { describe, expect, test } from 'vitest';
 import { build } from '../../src/expression/index.ts';
+import { expansionText } from '../../src/write/index.ts';
 import { expansionOf, expectExpansion, latex, outcomeOf, positive, type Request, same } from './tools.ts';
 
 type Row = readonly [text: string, request: Request, sum: string, power: string | null, log?: number];
@@ -58,6 +59,13 @@ for (const [name, rows] of groups) {
     }
   });
 }
+
+// (3 n)!/(n! (2 n)!) by Stirling's formula (DLMF 5.11.3): powers of the variable stand beside exponentials, so that no logarithm is left in an exponent.
+test('binomial(3x, x) at infinity', () => {
+  const found = expansionOf('\\binom{3x}{x}', { at: 'inf', terms: 2 });
+  expectExpansion(found, '(27/4)^x*sqrt(3/(pi*x))/2*(1 - 7/(72*x))', '2', 0, positive('x'));
+  expect(expansionText(found)).toBe('((27/4)^x·√(3/π)/(2√x))·(1 − 7/(72x) + O(x⁻²))');
+});
 
 describe('parameters', () => {
   test('1/sqrt(1 - v^2/c^2) in v', () => {

@@ -107,7 +107,7 @@ const logarithm = (x: Expression, base: Expression, env: Environment): Expressio
 
 /** The polynomial of a list of coefficients. */
 function polynomial(list: Code, argument: Code, falling: boolean, span: Span, env: Environment, read: (code: Code) => Meaning): Meaning | null {
-  const items = list.kind === 'list' ? list.items : list.kind === 'name' ? env.listOf(list.text) : null;
+  const items = list.kind === 'list' ? list.items : list.kind === 'name' ? (env.listOf(list.text)?.items ?? null) : null;
   if (!items || items.length === 0) return null;
   const x = read(argument);
   const values = items.map(read);

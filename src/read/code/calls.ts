@@ -4,6 +4,8 @@ import { acceptsArity, codeCall, describe, lookupCode } from '../../functions/in
 import { Declined } from '../../outcome.ts';
 import { libraryArithmetic } from './arithmetic.ts';
 import type { Environment, Meaning } from './environment.ts';
+import { readFold } from './folds.ts';
+import { entryOf, positionOf } from './lists.ts';
 import { libraryName, namedConstant, segments } from './paths.ts';
 import type { CallCode, Code, MemberCode, NameCode } from './syntax.ts';
 import { combine, declaredType, floating, INTEGER, UNKNOWN, type ValueType } from './types.ts';
@@ -17,6 +19,8 @@ export function readName(code: NameCode, env: Environment): Meaning {
   const span = { start: code.start, end: code.end };
   const constant = namedConstant(segments(code) ?? [code.text], env);
   if (constant) return { expression: { ...constant, span }, type: floating(null, null) };
+  const counter = env.counters?.get(env.spell(code.text));
+  if (counter !== undefined) return { expression: { kind: 'number', value: Q.rational(counter), span }, type: { ...INTEGER, flexible: false } };
   if (WORDS.has(code.text) && !env.isLocal(code.text)) throw new Declined('unreadable', `${code.text} is no number; select an arithmetic expression.`, span);
   const name = env.spell(code.text);
   return { expression: { kind: 'symbol', name, span }, type: env.typeOf(code.text) };
@@ -52,6 +56,9 @@ export function readCall(code: CallCode, env: Environment, read: Read): Meaning 
   const span = { start: code.start, end: code.end };
   const path = segments(code.callee);
   const written = spelled(code.callee, env);
+  if (code.callee.kind === 'name' && positionOf(code.callee, code.args, env) !== null) return read(entryOf(code.callee, code.args, span, env));
+  const folded = readFold(code, env, read);
+  if (folded) return folded;
   if (code.callee.kind === 'name' && env.isLocalFunction(code.callee.text)) return unspecified(code.callee.text, code.args, span, read);
   if (path) {
     const cast = castType(path, written, env);

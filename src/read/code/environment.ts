@@ -1,7 +1,7 @@
 /** What surrounds an expression while it is read: language, declared types, imports, local names, and remarks to hand back. */
 import type { Expression, Span } from '../../expression/index.ts';
 import type { CodeLanguage } from './languages/language.ts';
-import type { Code } from './syntax.ts';
+import type { ListCode } from './syntax.ts';
 import type { ValueType } from './types.ts';
 
 /** What a piece of code means, and the machine type it has. */
@@ -36,7 +36,9 @@ export interface Environment {
   /** The number behind a symbol (`c1`, `c[2]`) that the file declares as a constant or gives a value once; null for others. */
   readonly constantOf: (symbol: string) => Expression | null;
   /** The entries of a list that the file declares once under this name. */
-  readonly listOf: (name: string) => readonly Code[] | null;
+  readonly listOf: (name: string) => ListCode | null;
+  /** Counters of the loops that are being followed, by spelled name; their values are exact. */
+  readonly counters?: ReadonlyMap<string, bigint>;
   readonly remark: (span: Span, message: string) => void;
   /** Canonical spelling: in languages that fold case, the first one read. */
   readonly spell: (name: string) => string;

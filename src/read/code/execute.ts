@@ -4,8 +4,9 @@ import { attempt, Declined, type Outcome } from '../../outcome.ts';
 import { choose } from './conditions.ts';
 import type { Environment, Meaning } from './environment.ts';
 import { readMeaning } from './meaning.ts';
+import { roundsOf } from './loops.ts';
 import { operatorMeaning } from './operators.ts';
-import type { AssignCode, Code, FunctionCode, IfCode, LambdaCode } from './syntax.ts';
+import type { AssignCode, Code, FunctionCode, IfCode, LambdaCode, Loop } from './syntax.ts';
 import { partsOf, walkWithin } from './syntax.ts';
 
 /** Expressions that would have more nodes written out are not built. */
@@ -21,11 +22,11 @@ export interface Bound {
   readonly size: number;
 }
 
-/** Called with every statement before it takes effect. */
+/** Called with every statement before it takes effect; the environment knows the counters of the loops around it. */
 export interface Watcher {
-  readonly statement?: (code: Code, bindings: Bindings) => void;
+  readonly statement?: (code: Code, bindings: Bindings, env: Environment) => void;
   /** An if whose branches end in values, with what follows it where it has no other branch. */
-  readonly choice?: (code: IfCode, then: Meaning, otherwise: Meaning, bindings: Bindings) => void;
+  readonly choice?: (code: IfCode, then: Meaning, otherwise: Meaning, bindings: Bindings, env: Environment) => void;
 }
 
 /** The expression with locals replaced by their values, the locals that went in, and its size; Declined where one cannot be read. */
@@ -95,7 +96,7 @@ interface Run {
 /** Runs a body; the value it gives back, or null where it gives none. Throws Declined where the value cannot be followed. */
 export function execute(body: Code, env: Environment, watcher: Watcher = {}): Meaning | null {
   const isExpression = !STATEMENT_KINDS.has(body.kind);
-  if (isExpression) watcher.statement?.(body, new Map());
+  if (isExpression) watcher.statement?.(body, new Map(), env);
   return isExpression ? valueNow(body, env, new Map()).meaning : finish({ env, watcher, steps: 0, lost: false }, (context) => run(statementsOf(body), 0, context, new Map(), 0), body);
 }
 
@@ -133,7 +134,7 @@ function run(statements: readonly Code[], from: number, context: Run, bindings: 
     if (!code) continue;
     context.steps += 1;
     if (context.steps > MOST_STEPS) throw new Declined('over-budget', 'This code has too many branches to be followed; select an expression.', { start: code.start, end: code.end });
-    watcher.statement?.(code, bindings);
+    watcher.statement?.(code, bindings, env);
     const last = i === statements.length - 1;
     switch (code.kind) {
       case 'return':
@@ -158,9 +159,12 @@ function run(statements: readonly Code[], from: number, context: Run, bindings: 
       case 'lambda':
       case 'import':
         break;
-      case 'opaque':
+      case 'opaque': {
+        const before: Live = new Map(bindings);
         passOver(code, context, bindings, depth);
+        if (code.loop && depth < DEEPEST) for (const [name, bound] of followed(code.loop, context, before, depth)) bindings.set(name, bound);
         break;
+      }
       default:
         for (const name of changedIn(code)) bindings.set(env.spell(name), null);
         if (last && lastIsValue) return valueNow(code, env, bindings).meaning;
@@ -222,6 +226,36 @@ function passOver(code: Code, context: Run, bindings: Live, depth: number): void
   }
 }
 
+/** What the variables hold after a loop whose rounds are known; nothing where they are not. The watcher sees the last round. */
+function followed(loop: Loop, context: Run, before: Live, depth: number): ReadonlyMap<string, Bound | null> {
+  const { env } = context;
+  const rounds = roundsOf(loop, env);
+  const changed = new Set(changedIn(loop.body).map((name) => env.spell(name)));
+  if (!rounds || rounds.some((round) => [...round.keys()].some((name) => changed.has(env.spell(name))))) return new Map();
+  const bindings: Live = new Map(before);
+  const outcome = attempt(() => {
+    rounds.forEach((round, k) => {
+      const counters = new Map(env.counters);
+      for (const [name, item] of round) {
+        const local = env.spell(name);
+        counters.delete(local);
+        bindings.delete(local);
+        if (item.kind === 'whole') counters.set(local, item.value);
+        else if (item.kind === 'entry') bind(local, item.code, env, bindings);
+      }
+      const inside: Run = { ...context, env: { ...env, counters }, watcher: k === rounds.length - 1 ? context.watcher : {} };
+      run(statementsOf(loop.body), 0, inside, bindings, depth + 1);
+      context.steps = inside.steps;
+      context.lost ||= inside.lost;
+    });
+  });
+  if (!outcome.ok) {
+    if (outcome.error.code === 'over-budget') throw new Declined('over-budget', outcome.error.message, { start: loop.body.start, end: loop.body.end });
+    return new Map();
+  }
+  return new Map([...changed].map((name) => [name, bindings.get(name) ?? null]));
+}
+
 /** An if with returns is a choice between its value and that of what follows. */
 function choice(code: IfCode, statements: readonly Code[], i: number, context: Run, bindings: Live, depth: number): Meaning {
   const place = { start: code.start, end: code.end };
@@ -235,7 +269,7 @@ function choice(code: IfCode, statements: readonly Code[], i: number, context: R
   const [then, rest] = [arm(code.then), arm(code.otherwise)];
   if (!then.ok || !rest.ok) throw new Declined('unreadable', 'One of these branches cannot be followed; select an expression inside it.', place);
   if (!then.value || !rest.value) throw new Declined('unreadable', 'One of these branches gives no value.', place);
-  context.watcher.choice?.(code, then.value, rest.value, bindings);
+  context.watcher.choice?.(code, then.value, rest.value, bindings, context.env);
   return chosen(code, then.value, rest.value, context.env, bindings);
 }
 
@@ -253,7 +287,7 @@ function rebind(code: IfCode, context: Run, bindings: Live, depth: number): void
       continue;
     }
     const both = attempt(() => {
-      context.watcher.choice?.(code, yes.meaning, no.meaning, bindings);
+      context.watcher.choice?.(code, yes.meaning, no.meaning, bindings, context.env);
       return chosen(code, yes.meaning, no.meaning, context.env, bindings);
     });
     bindings.set(name, both.ok && yes.size + no.size < MOST_NODES ? { meaning: both.value, through: new Set([...yes.through, ...no.through, name]), size: yes.size + no.size + 1 } : null);

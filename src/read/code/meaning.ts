@@ -6,8 +6,9 @@ import { choose } from './conditions.ts';
 import { divide, floorDivide, languageName, literalInteger } from './division.ts';
 import type { Environment, Meaning } from './environment.ts';
 import { readLiteral } from './literals.ts';
+import { entryOf, positionOf } from './lists.ts';
 import { operatorMeaning } from './operators.ts';
-import type { BinaryCode, Code, LiteralCode } from './syntax.ts';
+import type { BinaryCode, Code, IndexCode, LiteralCode } from './syntax.ts';
 import { combine, declaredType, floating, INTEGER, UNKNOWN, type ValueType } from './types.ts';
 
 const spanOf = (code: { readonly start: number; readonly end: number }): Span => ({ start: code.start, end: code.end });
@@ -52,7 +53,7 @@ export function readMeaning(code: Code, env: Environment, depth = 0): Meaning {
       if (code.value) return read(code.value);
       throw new Declined('unreadable', 'Nothing is returned here; select an expression.', spanOf(code));
     case 'index':
-      return { expression: { kind: 'symbol', name: sourceOf(code, env), span: spanOf(code) }, type: UNKNOWN };
+      return indexMeaning(code, env, read);
     case 'declare':
     case 'assign':
       if (code.value && (code.kind === 'declare' || /^:?=$/.test(code.operator))) return read(code.value);
@@ -68,6 +69,15 @@ export function readMeaning(code: Code, env: Environment, depth = 0): Meaning {
     case 'opaque':
       throw new Declined('unreadable', `This ${code.kind === 'opaque' ? code.what : code.kind} cannot be read as mathematics; select an arithmetic expression.`, spanOf(code));
   }
+}
+
+/** The entry of a list; outside a loop that is followed, an entry stays a name of its own. */
+function indexMeaning(code: IndexCode, env: Environment, read: (code: Code) => Meaning): Meaning {
+  if (env.counters) return read(entryOf(code.object, code.args, spanOf(code), env));
+  const [index] = code.args;
+  const known = index && index.kind !== 'literal' && code.object.kind === 'name' ? positionOf(code.object, code.args, env) : null;
+  if (known !== null) return { expression: { kind: 'symbol', name: `${sourceOf(code.object, env)}[${known}]`, span: spanOf(code) }, type: UNKNOWN };
+  return { expression: { kind: 'symbol', name: sourceOf(code, env), span: spanOf(code) }, type: UNKNOWN };
 }
 
 function literalMeaning(code: LiteralCode, env: Environment): Meaning {
@@ -96,6 +106,8 @@ function unaryMeaning(operator: string, operand: Code, span: Span, env: Environm
       return { expression: { kind: 'negation', operand: inner.expression, span }, type: inner.type };
     }
     case '*':
+      // A counter or an entry that a loop hands out by reference.
+      if (operand.kind === 'name' && env.counters) return read(operand);
       return { expression: { kind: 'symbol', name: sourceOf({ kind: 'group', inner: operand, ...span }, env), span }, type: UNKNOWN };
     case '√':
     case '∛': {

@@ -67,7 +67,9 @@ export function polynomialIn(expression: Expression, variable: string): Coeffici
         return top && divisor && bottom?.length === 1 ? top.map((c) => Q.divide(c, divisor)) : null;
       }
       case 'power': {
-        const exponent = e.exponent.kind === 'number' && Q.isInteger(e.exponent.value) ? e.exponent.value.num : null;
+        const power = visit(e.exponent);
+        const [value = Q.ZERO] = power ?? [];
+        const exponent = power && power.length <= 1 && Q.isInteger(value) ? value.num : null;
         const base = visit(e.base);
         if (!base || exponent === null || exponent < 0n || exponent > BigInt(MOST_DEGREE)) return null;
         let total: Coefficients | null = [Q.ONE];

@@ -3,6 +3,7 @@ import { type Expression, freeSymbols, type Span } from '../../expression/index.
 import { attempt } from '../../outcome.ts';
 import type { Environment, Imports, Remark } from './environment.ts';
 import type { CodeLanguage } from './languages/index.ts';
+import { listValue } from './listValue.ts';
 import { readMeaning } from './meaning.ts';
 import { parseByPrecedence } from './precedence/index.ts';
 import type { AssignCode, Code, FunctionCode, LambdaCode } from './syntax.ts';
@@ -37,6 +38,19 @@ export interface Scope {
 }
 
 const targetName = (code: AssignCode): string | null => (code.target.kind === 'name' ? code.target.text : null);
+
+/** `c[2] = ...` changes the list c. */
+const changedList = (target: Code): string | null => (target.kind === 'index' && target.object.kind === 'name' ? target.object.text : target.kind === 'call' && target.callee.kind === 'name' ? target.callee.text : null);
+
+const CHANGING: ReadonlySet<string> = new Set(['append', 'push', 'push_back', 'pop', 'pop_back', 'insert', 'extend', 'remove', 'removeLast', 'sort', 'reverse', 'clear', 'fill', 'splice', 'shift', 'unshift', 'add', 'swap', 'rotate_left', 'rotate_right', 'resize', 'truncate', 'emplace_back']);
+
+/** `c.append(...)`, `push!(c, ...)` change the list c. */
+function changedByCall(code: Code): string | null {
+  if (code.kind !== 'call') return null;
+  if (code.callee.kind === 'member' && code.callee.object.kind === 'name' && CHANGING.has(code.callee.name)) return code.callee.object.text;
+  const [first] = code.args;
+  return code.callee.kind === 'name' && code.callee.text.endsWith('!') && first?.kind === 'name' ? first.text : null;
+}
 
 function declarationOf(code: Code, outer: boolean): readonly Declaration[] {
   const span = { start: code.start, end: code.end };
@@ -103,7 +117,7 @@ function factsOf(root: Code): Facts {
   if (known) return known;
   const assignments = new Map<string, number>();
   for (const code of walkCode(root)) {
-    const name = code.kind === 'declare' && code.value ? code.name : code.kind === 'assign' ? targetName(code) : null;
+    const name = code.kind === 'declare' && code.value ? code.name : code.kind === 'assign' ? (targetName(code) ?? changedList(code.target)) : changedByCall(code);
     if (name !== null) assignments.set(name, (assignments.get(name) ?? 0) + 1);
   }
   const { imports, nodes } = importsOf(root);
@@ -183,15 +197,16 @@ export function environmentAt(scope: Scope, text: string, language: CodeLanguage
       const declaration = find(indexed?.[1] ?? symbol);
       if (!declaration?.value || declaration.kind !== 'variable' || (scope.assignments.get(declaration.name) ?? 0) > 1) return null;
       const { value } = declaration;
-      const first = language.family === 'julia' || language.family === 'r' ? 1 : 0;
-      const code = indexed ? (value.kind === 'list' ? value.items[Number(indexed[2]) - first] : undefined) : value.kind === 'opaque' && value.what === 'macro' ? parseByPrecedence(text, language, value.start, value.end).root : value;
+      const list = indexed ? listValue(value, language.family, text) : null;
+      const first = Number(list?.first ?? (language.family === 'julia' || language.family === 'r' ? 1 : 0));
+      const code = indexed ? list?.items[Number(indexed[2]) - first] : value.kind === 'opaque' && value.what === 'macro' ? parseByPrecedence(text, language, value.start, value.end).root : value;
       if (!code || code.kind === 'list' || code.kind === 'lambda') return null;
       const read = attempt(() => readMeaning(code, { ...environment, remark: () => undefined }));
       return read.ok && isNumeric(read.value.expression) ? read.value.expression : null;
     },
     listOf: (name) => {
       const declaration = find(name);
-      return declaration?.value?.kind === 'list' && (scope.assignments.get(declaration.name) ?? 0) <= 1 ? declaration.value.items : null;
+      return declaration?.value && (scope.assignments.get(declaration.name) ?? 0) <= 1 ? listValue(declaration.value, language.family, text) : null;
     },
     remark: (span, message) => remarks.push({ span, message }),
     spell: (name) => {

@@ -74,10 +74,10 @@ function watch(body: { readonly code: Code; readonly environment: Environment },
 export function seriesBranches(program: Program, text: string, language: CodeLanguage): readonly SeriesBranch[] {
   const found = new Map<string, SeriesBranch>();
   for (const body of bodies(program, text, language)) {
-    const add = (whole: Code, condition: Code, yes: Meaning, no: Meaning, yesSpan: Span, noSpan: Span, bindings: Bindings): void => {
+    const add = (whole: Code, condition: Code, yes: Meaning, no: Meaning, yesSpan: Span, noSpan: Span, bindings: Bindings, env: Environment): void => {
       const [seriesFirst, seriesLast] = [isSeriesBeside(yes.expression, no.expression), isSeriesBeside(no.expression, yes.expression)];
       if (!seriesFirst && !seriesLast) return;
-      const comparison = attempt(() => conditionOf(condition, body.environment, bindings));
+      const comparison = attempt(() => conditionOf(condition, env, bindings));
       const format = (seriesFirst ? no : yes).type.format ?? language.literalFormat;
       found.set(`${whole.start}:${whole.end}`, {
         span: span(whole),
@@ -93,17 +93,17 @@ export function seriesBranches(program: Program, text: string, language: CodeLan
       });
     };
     watch(body, {
-      statement: (statement, bindings) => {
+      statement: (statement, bindings, env) => {
         const outer = statement.kind === 'if' ? statement.condition : statement;
         if (outer.kind === 'block' || outer.kind === 'opaque') return;
         for (const code of walkWithin(outer)) {
           const parts = choiceParts(code);
           if (!parts) continue;
-          const values = attempt(() => [valueNow(parts.then, body.environment, bindings).meaning, valueNow(parts.otherwise, body.environment, bindings).meaning] as const);
-          if (values.ok) add(code, parts.condition, values.value[0], values.value[1], span(parts.then), span(parts.otherwise), bindings);
+          const values = attempt(() => [valueNow(parts.then, env, bindings).meaning, valueNow(parts.otherwise, env, bindings).meaning] as const);
+          if (values.ok) add(code, parts.condition, values.value[0], values.value[1], span(parts.then), span(parts.otherwise), bindings, env);
         }
       },
-      choice: (code, then, otherwise, bindings) => add(code, code.condition, then, otherwise, then.expression.span ?? span(code.then), otherwise.expression.span ?? span(code), bindings),
+      choice: (code, then, otherwise, bindings, env) => add(code, code.condition, then, otherwise, then.expression.span ?? span(code.then), otherwise.expression.span ?? span(code), bindings, env),
     });
   }
   return [...found.values()].sort((a, b) => a.span.start - b.span.start);
@@ -140,19 +140,23 @@ function conditionOf(code: Code, environment: Environment, bindings: Bindings): 
 }
 const literal = (text: string, at: Code): Code => ({ kind: 'literal', text, start: at.start, end: at.end });
 
+/** The code after a branch is met once for each way, that of a loop once as it stands and once with everything filled in. */
+const MOST_LOOKS = 2;
+
 /** Polynomials of degree 2 or more with at least two terms, in exactly one variable. Those that only feed a larger one are left out. */
 export function polynomialCode(program: Program, text: string, language: CodeLanguage): readonly PolynomialCode[] {
   const found: (PolynomialCode & { readonly through: ReadonlySet<string>; readonly body: Code })[] = [];
   for (const body of bodies(program, text, language)) {
-    const seen = new Set<Code>();
-    const look = (code: Code, bindings: Bindings, target: string | null, type: ValueType | null): void => {
-      if (seen.has(code)) return;
-      seen.add(code);
+    const seen = new Map<Code, number>();
+    const look = (code: Code, env: Environment, bindings: Bindings, target: string | null, type: ValueType | null): void => {
+      const times = (seen.get(code) ?? 0) + 1;
+      if (times > MOST_LOOKS || found.some((p) => p.span.start === code.start && p.span.end === code.end)) return;
+      seen.set(code, times);
       if (code.kind === 'function' || code.kind === 'lambda') return;
       if (mayBePolynomial(code)) {
-        const now = attempt(() => valueNow(code, body.environment, bindings));
+        const now = attempt(() => valueNow(code, env, bindings));
         if (now.ok) {
-          const expression = filled(now.value.meaning.expression, body.environment);
+          const expression = filled(now.value.meaning.expression, env);
           const free = freeSymbols(expression);
           const [variable] = free;
           const coefficients = variable !== undefined && free.length === 1 && body.environment.typeOf(variable).kind !== 'integer' ? polynomialIn(expression, variable) : null;
@@ -163,16 +167,16 @@ export function polynomialCode(program: Program, text: string, language: CodeLan
           }
         }
       }
-      for (const part of partsOf(code)) look(part, bindings, null, null);
+      for (const part of partsOf(code)) look(part, env, bindings, null, null);
     };
     watch(body, {
-      statement: (statement, bindings) => {
+      statement: (statement, bindings, env) => {
         if (statement.kind === 'block' || statement.kind === 'if' || statement.kind === 'opaque') return;
         const target = statement.kind === 'declare' ? statement.name : statement.kind === 'assign' && statement.target.kind === 'name' ? statement.target.text : null;
-        const changed = statement.kind === 'assign' && !/^:?=$/.test(statement.operator) ? compoundValue(statement, body.environment) : null;
+        const changed = statement.kind === 'assign' && !/^:?=$/.test(statement.operator) ? compoundValue(statement, env) : null;
         const value = changed ?? (statement.kind === 'declare' || statement.kind === 'assign' || statement.kind === 'return' ? statement.value : statement);
         const type = target === null ? null : body.environment.typeOf(target);
-        if (value) look(value, bindings, target, type);
+        if (value) look(value, env, bindings, target, type);
       },
     });
   }

@@ -66,6 +66,8 @@ export interface GroupCode extends CodeNode {
 export interface ListCode extends CodeNode {
   readonly kind: 'list';
   readonly items: readonly Code[];
+  /** The index of the first entry where the declaration gives it (Fortran's `c(0:5)`); else it is the language's. */
+  readonly first?: bigint;
 }
 export interface LambdaCode extends CodeNode {
   readonly kind: 'lambda';
@@ -83,6 +85,19 @@ export interface OpaqueCode extends CodeNode {
   readonly kind: 'opaque';
   readonly what: string;
   readonly parts: readonly Code[];
+  /** A loop whose head may be followed; its pieces are among the parts. */
+  readonly loop?: Loop;
+}
+
+/** `for (first; condition; step)`, or names that run over a range or a list. */
+export type LoopHead =
+  | { readonly kind: 'steps'; readonly first: Code; readonly condition: Code; readonly step: Code | null }
+  | { readonly kind: 'each'; readonly names: readonly string[]; readonly over: Code }
+  /** Fortran: `do i = first, last, step`. */
+  | { readonly kind: 'range'; readonly name: string; readonly first: Code; readonly last: Code; readonly step: Code | null };
+export interface Loop {
+  readonly head: LoopHead;
+  readonly body: Code;
 }
 
 export interface BlockCode extends CodeNode {

@@ -4,7 +4,7 @@ import { Q, structureKey } from '../../../src/expression/index.ts';
 import { type CodeReading, documentOffset } from '../../../src/read/code/index.ts';
 import { readPlain } from '../../../src/read/index.ts';
 import { PROGRAMS } from './programs.ts';
-import { reader } from './reader.ts';
+import { keyOf, reader } from './reader.ts';
 
 const plain = (text: string): string => {
   const read = readPlain(text);
@@ -279,6 +279,10 @@ describe('a text of several statements', () => {
     expect(read.ok && structureKey(read.value.expression)).toBe(plain('sin(x*x)/(x*x)'));
   });
   it('does not fill in what a loop changes', () => {
-    expect(reader.readCode('double f(double x) { double s = 0; for (int i = 0; i < 3; i++) s += x; return s / x; }', 'c')).toMatchObject({ ok: false });
+    expect(reader.readCode('double f(double x, int n) { double s = 0; for (int i = 0; i < n; i++) s += x; return s / x; }', 'c')).toMatchObject({ ok: false });
+    expect(reader.readCode('double f(double x) { double s = 0; while (s < 3) s += x; return s / x; }', 'c')).toMatchObject({ ok: false });
+  });
+  it('carries out a loop whose rounds are known', () => {
+    expect(keyOf('double f(double x) { double s = 0; for (int i = 0; i < 3; i++) s += x; return s / x; }', 'c')).toBe(keyOf('double f(double x) { return (0 + x + x + x) / x; }', 'c'));
   });
 });

@@ -1,5 +1,6 @@
 /** Rules for statements and declarations: only what gives names, constants, functions, branches and returns. */
 import type { Code, ParameterCode } from '../syntax.ts';
+import { forLoop } from './loops.ts';
 import { child, childrenOf, isComment, type Lowering, namedChildren, opaque, place, type Rule } from './rules.ts';
 import type { Raw } from './raw.ts';
 
@@ -320,6 +321,12 @@ export const STATEMENTS: Readonly<Record<string, Rule>> = {
     const lowered = branch(raw, at);
     return lowered;
   },
+  for_statement: forLoop,
+  for_range_loop: forLoop,
+  enhanced_for_statement: forLoop,
+  for_in_statement: forLoop,
+  foreach_statement: forLoop,
+  for_expression: forLoop,
   preproc_def: macro,
   preproc_function_def: macroFunction,
   preproc_include: include,

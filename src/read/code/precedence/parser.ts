@@ -6,7 +6,7 @@ import type { Token } from './tokens.ts';
 
 /** Brackets, signs and exponents inside one another beyond this are skipped as opaque. */
 const MAX_NESTING = 250;
-const CLOSERS: Readonly<Record<string, string>> = { '(': ')', '[': ']', '{': '}' };
+const CLOSERS: Readonly<Record<string, string>> = { '(': ')', '[': ']', '{': '}', '(/': '/)' };
 const END: Token = { kind: 'end', text: '', start: 0, end: 0, spaced: false };
 const NO_OPERAND: ReadonlySet<string> = new Set(['then', 'else', 'elseif', 'end', 'endif', 'do', 'return', 'elsif', 'in', 'to', 'otherwise']);
 
@@ -419,7 +419,7 @@ export class Parser {
     }
     const cast = this.#cast(token);
     if (cast) return cast;
-    const square = token.text === '[';
+    const square = token.text === '[' || token.text === '(/';
     const items = this.list();
     const [only] = items;
     if (square || !only || items.length !== 1 || only.kind === 'named') return { kind: 'list', items, start: token.start, end: this.lastEnd };

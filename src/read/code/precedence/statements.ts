@@ -1,6 +1,7 @@
 /** Statements as far as names, constants, functions, branches and returns need them; everything else is passed over token by token. */
 import type { CodeLanguage } from '../languages/index.ts';
 import type { Code, ParameterCode } from '../syntax.ts';
+import { opensLoop, readLoop } from './loops.ts';
 import { Parser } from './parser.ts';
 import type { Token } from './tokens.ts';
 
@@ -87,6 +88,7 @@ class StatementReader {
   /** Undefined where the word opens no statement of its own. */
   #keyword(token: Token, word: string): Code | null | undefined {
     const p = this.#parser;
+    if (opensLoop(word, this.#language) && p.peek(1).text !== '=') return this.#loop(token, word);
     const { family } = this.#language;
     switch (word) {
       case 'return': {
@@ -163,6 +165,20 @@ class StatementReader {
       default:
         return this.#typed(token, word);
     }
+  }
+
+  #loop(token: Token, word: string): Code {
+    const p = this.#parser;
+    this.#depth += 1;
+    const loop = readLoop(p, word, token, {
+      list: (stops) => this.#list(stops),
+      arm: () => this.#arm(),
+      simple: () => this.#simple(),
+      declared: () => this.#statement(),
+      skipLine: () => this.#skipLine(),
+    });
+    this.#depth -= 1;
+    return loop;
   }
 
   #endOfStatement(): boolean {
@@ -267,8 +283,16 @@ class StatementReader {
     let name = first;
     for (;;) {
       let value: Code | null = null;
-      if (p.is('[')) p.list();
+      let bounds = type;
+      if (p.is('[') || (p.is('(') && this.#language.family === 'fortran')) {
+        const from = p.peek().start;
+        p.list();
+        bounds = this.#sliceFrom(from);
+      }
       if (p.take('=')) value = p.is('{') ? bracedList(p) : p.expression();
+      // Fortran: `c(0:5)`, `dimension(0:5)`.
+      const lower = this.#language.family === 'fortran' && value?.kind === 'list' ? /^(?:.*dimension)?\((-?\d+):/i.exec(bounds)?.[1] : undefined;
+      if (value?.kind === 'list' && lower !== undefined) value = { ...value, first: BigInt(lower) };
       found.push({ kind: 'declare', name: name.text, type, value, constant, start: found.length === 0 ? token.start : name.start, end: p.lastEnd });
       if (!p.is(',') || p.peek(1).kind !== 'name') break;
       p.next();
@@ -461,7 +485,6 @@ class StatementReader {
       return null;
     }
     p.next();
-    if (p.is('(')) p.list();
     const declared = this.#declared(token, /parameter/i.test(type) ? `const ${type}` : type, first);
     return declared;
   }

@@ -191,7 +191,11 @@ export function tokenize(text: string, language: CodeLanguage, start: number, en
       push('name', nameEnd(text, at, name, end, language));
       continue;
     }
-    if (c === '(' || c === '[' || c === '{') push('open', at + 1);
+    // Fortran's older brackets of lists (ISO/IEC 1539-1, array constructors).
+    const slashed = language.family === 'fortran' ? text.slice(at, Math.min(end, at + 2)) : '';
+    if (slashed === '(/') push('open', at + 2);
+    else if (slashed === '/)') push('close', at + 2);
+    else if (c === '(' || c === '[' || c === '{') push('open', at + 1);
     else if (c === ')' || c === ']' || c === '}') push('close', at + 1);
     else if (c === ',' || c === ';') push('separator', at + 1);
     else {

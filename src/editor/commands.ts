@@ -186,7 +186,7 @@ async function useLibraryFunction(room: Room, target: Target): Promise<unknown> 
   const text = document.getText();
   const reading = consultation.answer.ok ? consultation.answer.reading : undefined;
   const answer: GuardAnswer | ErrorAnswer = await room.services.status.during(
-    room.services.client.ask<GuardAnswer>({ ask: 'guard', text, selection: place, language, emit: isCode(language) ? language : 'c', ...(reading ? { variable: reading.variable, point: reading.point } : {}), budget_ms: settingsFor(document).budget }),
+    room.services.client.ask<GuardAnswer>({ ask: 'guard', text, files: await room.services.companions.of({ uri: document.uri, text, language }), selection: place, language, emit: isCode(language) ? language : 'c', ...(reading ? { variable: reading.variable, point: reading.point } : {}), budget_ms: settingsFor(document).budget }),
   );
   if (!answer.ok) return say(said(answer.error.message));
   if (answer.forms.length === 0) return say(vscode.l10n.t('No exact form with library functions is known for this expression.'));

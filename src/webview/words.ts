@@ -87,7 +87,7 @@ export const WORDS = {
   stale: 'The text has changed since.',
   compute: 'Compute',
   format: 'format',
-  asInCode: 'as in the code',
+  asInCode: 'as in code',
   argument: 'argument',
   degree: 'degree {0}',
   taylor: 'a truncated expansion would need degree {0}',

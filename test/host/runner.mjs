@@ -3,8 +3,8 @@ import { mkdirSync } from 'node:fs';
 import path from 'node:path';
 import { ROOT } from '../../src/start/workbench.mjs';
 
-const SUITE_LIMIT_MS = 330_000;
-const SCENE_LIMIT_MS = 120_000;
+const SUITE_LIMIT_MS = 480_000;
+const SCENE_LIMIT_MS = 200_000;
 export const SETTINGS = { 'editor.hover.delay': 50, 'workbench.colorTheme': 'Default Dark Modern', 'editor.wordWrap': 'on', 'workbench.reduceMotion': 'on', 'files.autoSave': 'off' };
 
 export function limited(work, ms, what) {

@@ -321,6 +321,54 @@ export const cases: Readonly<Record<string, () => Promise<void>>> = {
     }
   },
 
+  'a changed companion file has the open document checked again': async () => {
+    const folder = vscode.workspace.workspaceFolders?.[0]?.uri;
+    check(folder, 'no folder is open');
+    const [macros, main] = ['macros-that-change.tex', 'uses-changing-macros.tex'].map((name) => vscode.Uri.joinPath(folder, name));
+    check(macros && main, 'no names');
+    const write = (uri: vscode.Uri, text: string): Thenable<void> => vscode.workspace.fs.writeFile(uri, new TextEncoder().encode(text));
+    try {
+      await write(macros, '\\newcommand{\\swing}[1]{\\sin\\left(#1\\right)}\n');
+      await write(main, '\\input{macros-that-change}\n\\[ \\swing{x} = x - \\frac{x^3}{5} + O(x^5) \\]\n\\[ \\cos x = 1 - \\frac{x^2}{3} + O(x^4) \\]\n');
+      const document = await vscode.workspace.openTextDocument(main);
+      await vscode.languages.setTextDocumentLanguage(document, 'latex');
+      await vscode.window.showTextDocument(document);
+      const failing = (): number => vscode.languages.getDiagnostics(document.uri).filter((d) => d.code === 'fails').length;
+      await until('two problems', () => failing() === 2);
+      const edited = await vscode.workspace.openTextDocument(macros);
+      const change = new vscode.WorkspaceEdit();
+      // With this meaning the first claim is right.
+      change.replace(macros, new vscode.Range(0, 0, 1, 0), '\\newcommand{\\swing}[1]{#1 - \\frac{(#1)^3}{5} + (#1)^5}\n');
+      await vscode.workspace.applyEdit(change);
+      await edited.save();
+      await until('one problem', () => failing() === 1);
+      await vscode.commands.executeCommand('workbench.action.closeActiveEditor');
+    } finally {
+      for (const uri of [macros, main]) await vscode.workspace.fs.delete(uri).then(undefined, () => undefined);
+    }
+  },
+
+  'Show Log opens the log, and nothing fails': async () => {
+    await vscode.commands.executeCommand('leadingOrder.showLog');
+    await until('the log', () => vscode.window.visibleTextEditors.some(({ document }) => document.uri.scheme === 'output' && document.uri.path.includes('Leading Order')));
+    await vscode.commands.executeCommand('workbench.action.closePanel');
+  },
+
+  'Forget Answers forgets: the quantity is asked for again': async () => {
+    const editor = await open('markdown', 'Words $\\sqrt{1 + a b}$ words.\n');
+    const place = { uri: editor.document.uri.toString(), version: editor.document.version, start: 7, end: 21 };
+    const at = new vscode.Position(0, 14);
+    editor.selection = new vscode.Selection(0, 7, 0, 21);
+    await vscode.commands.executeCommand('leadingOrder.fillInConstants', place, 'a');
+    await until('the expansion in a', async () => (await hoverText(editor.document, at)).includes('remembered for this file') || null);
+    await vscode.commands.executeCommand('leadingOrder.forgetAnswers');
+    const after = await until('another hover', async () => {
+      const text = await hoverText(editor.document, at);
+      return text.includes('remembered') ? null : text;
+    });
+    check(!after.includes('remembered for this file'), after.slice(0, 300));
+  },
+
   'Write Test Harness serves other languages than C': async () => {
     const editor = await open('python', '# leading-order: small x, on |x| <= 0.25\ny = np.sin(x)\n');
     select(editor, 'np.sin(x)');

@@ -1,7 +1,7 @@
 /** Findings as SARIF 2.1.0 (OASIS standard), for code-scanning services. */
 import { pathToFileURL } from 'node:url';
-import type { Log, ReportingDescriptor, Result } from 'sarif';
-import { type FileReport, placedFindings } from './checkReport.ts';
+import type { Fix, Log, Notification, ReportingDescriptor, Result } from 'sarif';
+import { type FileReport, type PlacedFinding, placedFindings, positionOf } from './checkReport.ts';
 
 const RULES: readonly ReportingDescriptor[] = [
   { id: 'expansion-fails', name: 'ExpansionFails', shortDescription: { text: 'A printed expansion is wrong.' }, defaultConfiguration: { level: 'error' } },
@@ -15,7 +15,8 @@ const uriOf = (path: string): string => (/^([a-zA-Z]:)?[\\/]/.test(path) ? pathT
 function resultsOf(report: FileReport): Result[] {
   return placedFindings(report)
     .filter(({ finding }) => finding.verdict !== 'holds' || finding.severity !== 'none')
-    .map(({ finding, line, column, endLine, endColumn, cell }) => {
+    .map((placed) => {
+      const { finding, line, column, endLine, endColumn, cell } = placed;
       const index = ruleOf(finding.verdict);
       const rule = RULES[index];
       return {
@@ -32,9 +33,27 @@ function resultsOf(report: FileReport): Result[] {
             },
           },
         ],
+        ...fixesOf(report, placed),
       } satisfies Result;
     });
 }
+
+/** The correction as a replacement in the file; none in notebooks, whose cells are not text of their file. */
+function fixesOf(report: FileReport, { finding, cell }: PlacedFinding): { readonly fixes?: Fix[] } {
+  const { fix } = finding;
+  if (!fix || cell !== undefined) return {};
+  const [from, to] = [positionOf(report.text, fix.start), positionOf(report.text, fix.end)];
+  const deletedRegion = { startLine: from.line, startColumn: from.column, endLine: to.line, endColumn: to.column };
+  return { fixes: [{ description: { text: `Write ${fix.text}.` }, artifactChanges: [{ artifactLocation: { uri: uriOf(report.path) }, replacements: [{ deletedRegion, insertedContent: { text: fix.text } }] }] }] };
+}
+
+/** Files that were not checked, and why. */
+const notificationsOf = (report: FileReport): Notification[] =>
+  report.answers.flatMap(({ answer, cell }) =>
+    answer.ok
+      ? []
+      : [{ level: 'error', message: { text: `${cell === undefined ? 'Not checked' : `Cell ${cell + 1} not checked`}: ${answer.error.message}` }, locations: [{ physicalLocation: { artifactLocation: { uri: uriOf(report.path) } } }] } satisfies Notification],
+  );
 
 export function sarifReport(reports: readonly FileReport[], version: string): string {
   const log: Log = {
@@ -44,6 +63,8 @@ export function sarifReport(reports: readonly FileReport[], version: string): st
       {
         tool: { driver: { name: 'Leading Order', semanticVersion: version, rules: [...RULES] } },
         columnKind: 'utf16CodeUnits',
+        // The run itself ended well; what could not be checked is said file by file.
+        invocations: [{ executionSuccessful: true, toolExecutionNotifications: reports.flatMap(notificationsOf) }],
         results: reports.flatMap(resultsOf),
       },
     ],

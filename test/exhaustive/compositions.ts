@@ -59,10 +59,10 @@ function composition(random: () => number, depth: number, special: boolean): Exp
 }
 
 /** The one side of the point that the judge goes down, nearer with each. */
-function approaches(point: Expansion['point'], left: boolean): readonly Rational[] {
-  if (point === 'inf' || point === '-inf') return [20, 50, 100].map((n) => Q.rational(point === 'inf' ? n : -n));
+function approaches(point: Expansion['point'], left: boolean, closer: boolean): readonly Rational[] {
+  if (point === 'inf' || point === '-inf') return (closer ? [200, 1000, 5000] : [20, 50, 100]).map((n) => Q.rational(point === 'inf' ? n : -n));
   const a = point.kind === 'number' ? point.value : Q.ZERO;
-  return [3, 4, 5].map((n) => Q.add(a, Q.rational(left ? -1n : 1n, 10n ** BigInt(n))));
+  return (closer ? [12, 14, 16] : [3, 4, 5]).map((n) => Q.add(a, Q.rational(left ? -1n : 1n, 10n ** BigInt(n))));
 }
 
 type Verdict = { readonly kind: 'right' | 'wrong' | 'unjudged'; readonly detail: string };
@@ -81,8 +81,14 @@ function errorAt(found: Expansion, at: Rational): { readonly error: Ball; readon
   return null;
 }
 
+/** Where the error grows at first, nearer to the point: coefficients may be large, erfc(3) stands below in some. */
 function judgeSide(found: Expansion, left: boolean): Verdict {
-  const rows = approaches(found.point, left).map((at) => errorAt(found, at));
+  const first = judgeAlong(found, left, false);
+  return first.kind === 'wrong' && !found.exact ? judgeAlong(found, left, true) : first;
+}
+
+function judgeAlong(found: Expansion, left: boolean, closer: boolean): Verdict {
+  const rows = approaches(found.point, left, closer).map((at) => errorAt(found, at));
   if (found.exact) {
     const wrong = rows.find((r) => r && !real.containsZero(r.error));
     if (wrong) return { kind: 'wrong', detail: `called exact, but off by ${real.toDouble(wrong.error)}` };
@@ -167,7 +173,7 @@ for (let seed = firstSeed; seed < firstSeed + count; seed += 1) {
   }
   const verdict = judge(found.value, side);
   counts[verdict.kind] += 1;
-  if (verdict.kind === 'wrong') print('wrong', `${toPlain(partialSum(found.value))} | ${verdict.detail}`);
+  if (verdict.kind !== 'right') print(verdict.kind, `${toPlain(partialSum(found.value))} | ${verdict.detail}`);
 }
 for (const [reason, n] of [...reasons].sort((a, b) => b[1] - a[1])) process.stdout.write(`  ${n} ${reason}\n`);
 process.stdout.write(`${count} compositions of depth ${depth}, ${special ? 'all' : 'elementary'} functions: ${Object.entries(counts).map(([what, n]) => `${n} ${what}`).join(', ')}\n`);

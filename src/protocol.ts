@@ -83,7 +83,7 @@ export interface FitRequest extends CommonRequest {
   readonly assertion?: boolean;
   /** Floats that the leading coefficient is the sum of: 1, 2, by default 2 only where a relative tolerance is not kept with 1. Two words are two coefficients of one power, the larger first. */
   readonly words?: 1 | 2;
-  /** Whether the argument of exp, log, sin, cos, atan or a constant power is reduced to a small interval first: `auto` (default) where a plain polynomial would need a degree above 12 for the tolerance. A degree is that on the small interval. */
+  /** Whether the argument of exp, log, sin, cos, asin, acos, atan or a constant power is reduced to a small interval first: `auto` (default) where a plain polynomial would need a degree above 12 for the tolerance. A degree is that on the small interval. */
   readonly reduction?: 'auto' | 'none' | 'always';
   /** Code as a function (default) or as one expression in the variable. */
   readonly result?: 'function' | 'expression';

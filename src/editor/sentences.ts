@@ -126,7 +126,7 @@ export const SENTENCES = [
   'The interval of {0} needs its smaller end first.',
   'Functions of two variables are fitted for hypot(x, y), sqrt(x^2 + y^2) and atan2(y, x); give values for the other symbols.',
   'Functions of two variables are fitted by reduction, as one function in binary32 or binary64; leave method, reduction, pieces and result out.',
-  'Arguments are reduced for exp, log, sin, cos, atan and constant powers of one variable, in binary32 and binary64, by the method minimax; leave the reduction out.',
+  'Arguments are reduced for exp, log, sin, cos, asin, acos, atan and constant powers of one variable, in binary32 and binary64, by the method minimax; leave the reduction out.',
   'Rounding in {0} takes this tolerance away: the smallest proven error is {1}; allow a larger tolerance or a wider format.',
   'Rounding in {0} takes the tolerance {1} away when the argument is reduced; allow a larger tolerance or a wider format.',
   'The evaluation can overflow {0} on this interval; take a smaller interval or a wider format.',

@@ -67,9 +67,9 @@ describe('pi in code that declares it nowhere', () => {
     const answer = await fitted({ text: 'sin(PI*x)' });
     if (!answer.ok || !('coefficients' in answer)) throw new Error('no fit');
     expect(Number(answer.coefficients[0]?.value)).toBeCloseTo(Math.PI, 3);
-    expect(answer.assumptions[0]).toBe('PI is the circle constant 3.14159...: nothing in this text declares the name');
+    expect(answer.assumptions?.[0]).toBe('PI is the circle constant 3.14159...: nothing in this text declares the name');
     const guarded = await ask({ ask: 'guard', language: 'c', text: 'pi/2 - acos(x)', interval: ['-1/2', '1/2'] });
-    expect(guarded.ok ? guarded.assumptions[0] : guarded.error.message).toMatch(/^pi is the circle constant/);
+    expect(guarded.ok && 'assumptions' in guarded ? guarded.assumptions?.[0] : '').toMatch(/^pi is the circle constant/);
   });
   it('stays a symbol where an expansion does not need its value, and where it is asked about', async () => {
     expect((await expanded({ language: 'c', variable: 'x', text: 'sin(pi*x)' })).coefficients[0]).toBe('pi');

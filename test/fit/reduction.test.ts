@@ -18,7 +18,7 @@ beforeAll(async () => {
 const gcc = has('gcc');
 
 describe('emitted C with a reduced argument over floats of the whole interval (every 50 021st; test/exhaustive/reductions.ts runs all)', () => {
-  it.skipIf(!gcc).each(REDUCED_CASES.filter((_, k) => [8, 11, 18].includes(k)))('$text on [$low, $high] in $measure', (c) => {
+  it.skipIf(!gcc).each(REDUCED_CASES.filter((_, k) => [8, 11, 23].includes(k)))('$text on [$low, $high] in $measure', (c) => {
     const found = fitOf(c);
     const { worst, floats, subnormal } = overFloats(runOf(c, found), 50_021, hasFma());
     expect(found.reduction?.kernels.length).toBeGreaterThan(0);
@@ -57,11 +57,12 @@ const CASES: readonly Case[] = [
   { text: 'log(x)', name: 'ln', low: `1/${ten(40)}`, high: ten(30), borders: [181 / 128, 1], measure: 'relative', tolerance: '1e-6', format: 'binary32' },
   { text: 'sin(x)', name: 'sin', low: '-1000', high: '1000', borders: [Math.PI / 4], measure: 'absolute', tolerance: '1e-9', format: 'binary64' },
   { text: 'atan(x)', name: 'atan', low: `-${ten(30)}`, high: ten(30), borders: [53 / 128, 309 / 128], measure: 'absolute', tolerance: '1e-6', format: 'binary32' },
+  { text: 'acos(x)', name: 'acos', low: '-1', high: '1', borders: [1 / 2], measure: 'absolute', tolerance: '1e-9', format: 'binary64' },
   { text: 'x^(1/3)', name: 'cbrt', low: `1/${ten(300)}`, high: ten(300), borders: [181 / 128, 1], measure: 'relative', tolerance: '1e-9', format: 'binary64' },
 ];
 
-/** All of them where they are quick to run; elsewhere those that read and set exponents. */
-const casesFor = (language: string): readonly Case[] => (language === 'c' ? CASES : CASES.filter((c) => (c.name === 'exp' || c.name === 'ln') && (language !== 'python' || c.format === 'binary64')));
+/** All of them where they are quick to run; elsewhere those that read and set exponents, or take a square root. */
+const casesFor = (language: string): readonly Case[] => (language === 'c' ? CASES : CASES.filter((c) => (c.name === 'exp' || c.name === 'ln' || (c.name === 'acos' && language !== 'java')) && (language !== 'python' || c.format === 'binary64')));
 
 describe('every language that runs here', () => {
   for (const { language, ready, run } of RUNNERS) {
@@ -167,7 +168,7 @@ describe('when the argument is reduced', () => {
     { text: 'exp(x)', interval: ['-80', '80'], format: 'binary32', tolerance: 1e-6, measure: 'relative', emit: 'r', says: /R has no binary32 type/ },
     { text: 'exp(x)', interval: ['-80', '80'], format: 'binary64', tolerance: 1e-6, measure: 'relative', emit: 'r', says: /R has no exact way/ },
     { text: 'x^(17/19)', interval: ['1', '1000'], format: 'binary64', tolerance: 1e-9, measure: 'relative', says: /round the exponent/ },
-    { text: 'gamma(x)', interval: ['1', '2'], format: 'binary64', tolerance: 1e-6, says: /exp, log, sin, cos, atan/ },
+    { text: 'gamma(x)', interval: ['1', '2'], format: 'binary64', tolerance: 1e-6, says: /exp, log, sin, cos, asin, acos, atan/ },
   ])('$text on $interval in $format is declined with the reason', async ({ says, ...request }) => {
     const answer = await ask({ ...request, reduction: 'always' });
     expect(answer.ok ? '' : answer.error.message).toMatch(says);

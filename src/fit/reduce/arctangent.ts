@@ -53,7 +53,7 @@ function piecewise({ found }: Kernel, [quarter, half]: readonly TwoWords[], { lo
   const largest = greater(Q.absolute(low), Q.absolute(high));
   const { steps, result } = found.program;
   const bound = (words: TwoWords, r: Expression, pieces: readonly Interval[]): Rational | null =>
-    assembledError({ program: { steps: [{ name: REDUCED, value: r }, ...steps], result: build.sum(build.number(words.high), build.sum(build.number(words.low), result)) }, variable: 'x', pieces, missing: Q.add(missing, words.missing) }, measure, arithmetic);
+    assembledError({ program: { steps: [{ name: REDUCED, value: r }, ...steps], result: build.sum(build.number(words.high), build.sum(build.number(words.low), result)) }, variable: 'x', pieces, missing: () => Q.add(missing, words.missing) }, measure, arithmetic);
   const middle = quarter && Q.compare(largest, FIRST_OCTANT) > 0 ? bound(quarter, build.quotient(build.sum(x, build.number(Q.MINUS_ONE)), build.sum(x, build.number(1))), piecesOf(FIRST_OCTANT, lesser(largest, SECOND_OCTANT), PIECES)) : Q.ZERO;
   const outer = half && Q.compare(largest, SECOND_OCTANT) > 0 ? bound(half, build.quotient(build.number(Q.MINUS_ONE), x), [...piecesOf(SECOND_OCTANT, lesser(largest, FAR), PIECES), ...(Q.compare(largest, FAR) > 0 ? piecesOf(FAR, largest, 1) : [])]) : Q.ZERO;
   return middle && outer && greater(middle, outer);

@@ -11,8 +11,8 @@ export interface Assembled {
   /** Its argument, which is a float. */
   readonly variable: string;
   readonly pieces: readonly Interval[];
-  /** |exact value of the program - f| at most. */
-  readonly missing: Rational;
+  /** |exact value of the program - f| at most, on one piece. */
+  readonly missing: (piece: Interval) => Rational;
 }
 
 const { up, down } = interval;
@@ -30,9 +30,9 @@ export function piecesOf(low: Rational, high: Rational, count: number): Interval
  * binades: a float lies between them, so that rounding moves by no more than the distance, and by no more than one ulp of f.
  */
 export function assembledError({ program, variable, pieces, missing }: Assembled, measure: FitMeasure, arithmetic: Arithmetic): Rational | null {
-  const off = interval.fromRational(missing).hi;
   let worst = 0;
   for (const x of pieces) {
+    const off = interval.fromRational(missing(x)).hi;
     const { exact, absolute, before } = evaluationError(program, variable, x, arithmetic);
     const [whole, unrounded] = [up(up(absolute / SCALE) + off), up(up(before / SCALE) + off)];
     if (measure === 'absolute') {

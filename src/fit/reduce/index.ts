@@ -3,6 +3,7 @@ import { Q } from '../../expression/index.ts';
 import { describe } from '../../functions/index.ts';
 import { type Budget, Declined } from '../../outcome.ts';
 import { encloseReal, real } from '../../rigorous/index.ts';
+import { reduceArc } from './arc.ts';
 import { reduceArctangent } from './arctangent.ts';
 import { reduceCircular } from './circular.ts';
 import { reduceExponential } from './exponential.ts';
@@ -23,7 +24,7 @@ export const reducible = ({ whole }: ReductionProblem): Shape | null =>
   whole.method === 'minimax' && (whole.format.name === 'binary32' || whole.format.name === 'binary64') ? recognise(whole.function, whole.variable) : null;
 
 export const notReducible = (): Declined =>
-  new Declined('bad-request', 'Arguments are reduced for exp, log, sin, cos, atan and constant powers of one variable, in binary32 and binary64, by the method minimax; leave the reduction out.');
+  new Declined('bad-request', 'Arguments are reduced for exp, log, sin, cos, asin, acos, atan and constant powers of one variable, in binary32 and binary64, by the method minimax; leave the reduction out.');
 
 /** Whether a plain polynomial would need a degree above 12. By the Chebyshev coefficients of f in doubles: an estimate that only chooses the way. */
 export function needsHighDegree({ whole }: ReductionProblem, budget: Budget): boolean {
@@ -56,6 +57,8 @@ export function reduce(problem: ReductionProblem, shape: Shape, budget: Budget):
       return reduceCircular(problem, shape.rate, shape.quarter, budget);
     case 'logarithm':
       return reduceLogarithm(problem, shape.factor, budget);
+    case 'arc':
+      return reduceArc(problem, shape.of, shape.factor, budget);
     case 'arctangent':
       return reduceArctangent(problem, shape.factor, budget);
     case 'power':

@@ -108,7 +108,7 @@ export function reduceLogarithm(problem: ReductionProblem, factor: Expression, b
     const [from, to] = [n === least ? greater(window.low, Q.divide(low, powerOfTwo(n))) : window.low, n === most ? lesser(window.high, Q.divide(high, powerOfTwo(n))) : window.high];
     const whole = build.number(n);
     const result = summed(kernel.found.program.result, build.product(whole, build.number(second)), build.number(Q.multiply(Q.rational(n), first)));
-    const sharp = assembledError({ program: { steps: kernel.found.program.steps, result }, variable: REDUCED, pieces: piecesOf(from, to, PIECES), missing: Q.add(kernelMissing, Q.multiply(Q.rational(Math.abs(n)), missing)) }, measure, arithmetic);
+    const sharp = assembledError({ program: { steps: kernel.found.program.steps, result }, variable: REDUCED, pieces: piecesOf(from, to, PIECES), missing: () => Q.add(kernelMissing, Q.multiply(Q.rational(Math.abs(n)), missing)) }, measure, arithmetic);
     return sharp && Q.compare(sharp, bound) < 0 ? sharp : bound;
   };
   const total = exponents.map(whenSmall).reduce(greater, whenZero(error.total));

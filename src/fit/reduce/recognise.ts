@@ -9,6 +9,7 @@ export type Shape =
   | { readonly kind: 'circular'; readonly rate: Expression; /** f a quarter period on: f(x + pi / (2 c)). */ readonly quarter: Expression }
   | { readonly kind: 'logarithm'; /** f = A log(c x), natural logarithm. */ readonly factor: Expression }
   | { readonly kind: 'arctangent'; readonly factor: Expression }
+  | { readonly kind: 'arc'; readonly of: 'asin' | 'acos'; readonly factor: Expression }
   | { readonly kind: 'power'; readonly exponent: Rational };
 
 /** Bits of the constants of a reduction: more than any number of parts takes. */
@@ -86,6 +87,9 @@ function core(e: Expression, x: string, factor: Expression, around: Rebuild): Sh
       const next = e.function === 'sin' ? build.call('cos', argument) : build.negation(build.call('sin', argument));
       return rate && { kind: 'circular', rate, quarter: around(next) };
     }
+    case 'asin':
+    case 'acos':
+      return build.isSymbol(argument, x) ? { kind: 'arc', of: e.function, factor } : null;
     case 'atan':
       return build.isSymbol(argument, x) ? { kind: 'arctangent', factor } : null;
     default:

@@ -8,6 +8,7 @@ import { type Evaluate, bind, type Session } from '../session.ts';
 import { completeIntegral, SHIFT } from './complete.ts';
 import { byMoments } from './moments.ts';
 import { regularOn } from './monotone.ts';
+import { rescaled } from './rescale.ts';
 import { integrableAt, laplaceForm, watson } from './watson.ts';
 
 export function evaluateIntegral(s: Session, e: IntegralNode, evaluate: Evaluate): Multi {
@@ -110,7 +111,9 @@ function parametric(s: Session, e: IntegralNode, name: string, lower: Expression
   const moves = (tree: Expression): boolean => dependsOnBound(s, tree, name);
   const from = low === 0 ? lower : null;
   const to = high === 0 ? upper : null;
-  const form = laplaceForm(e.body, name, moves);
+  const grows = from !== null && to === null && isZero(s.context, s.context.field.fromExpression(from)) && growth(s.context, evaluate(s, build.symbol(s.context.local))) === 'large';
+  const balanced = grows ? rescaled(s, e.body, name, s.context.local) : null;
+  const form = balanced ?? laplaceForm(e.body, name, moves);
   if (form && growth(s.context, evaluate(s, form.lambda)) === 'large') return watson(s, form, name, from, to, evaluate);
   return byMoments(s, e.body, name, from, to, evaluate);
 }

@@ -5,10 +5,10 @@
  */
 import type { Element } from '../../algebra/types.ts';
 import { build, children, dependsOn, type Expression, Q } from '../../expression/index.ts';
-import { Declined } from '../../outcome.ts';
-import { addElements, type Context, eventualSign, growth, isRational, isZero, mapStream, monomial, type Multi, multiplyElements, Series, unnamed } from '../../series/index.ts';
-import { type Evaluate, bind, type Session } from '../session.ts';
+import { addElements, type Context, eventualSign, growth, mapStream, type Multi, multiplyElements, Series, unnamed } from '../../series/index.ts';
+import { type Evaluate, type Session } from '../session.ts';
 import { type Range, signOn } from './monotone.ts';
+import { polynomialIn, refuse } from './polynomial.ts';
 
 /** v^power exp(-rate v^degree): what is integrated on an infinite interval. */
 interface Weight {
@@ -35,8 +35,6 @@ export function byMoments(s: Session, body: Expression, v: string, low: Expressi
   });
   return new Series(series.element, stream, unnamed);
 }
-
-const refuse = (): Declined => new Declined('no-expansion', 'The integral over the parameter is not of a kind that is expanded here; integrate first or split the integrand.');
 
 /** Sorts the factors of the integrand: free of one of the two, exponents of exponentials in v alone, mixed. */
 function factors(e: Expression, v: string, moves: (e: Expression) => boolean, fixed: Expression[], mixed: Expression[], decays: Expression[]): boolean {
@@ -132,20 +130,6 @@ function weightOf(s: Session, decays: readonly Expression[], v: string, evaluate
   const rate = c.field.negate(term.coefficient);
   if (c.field.sign(rate) !== 1) throw refuse();
   return { rate, degree: term.power };
-}
-
-/** A polynomial in v by its coefficients: v becomes a series in a symbol of its own. */
-function polynomialIn(s: Session, e: Expression, v: string, evaluate: Evaluate): { power: bigint; coefficient: Element }[] {
-  const c = s.context;
-  const m = evaluate(bind(s, [[v, monomial(c, c.scale.local, Q.ONE)]]), e);
-  if (!(m instanceof Series)) return isZero(c, m) ? [] : [{ power: 0n, coefficient: m }];
-  const found: { power: bigint; coefficient: Element }[] = [];
-  for (let k = 0; ; k += 1) {
-    const t = m.stream.at(k);
-    if (!t) return found;
-    if (k > 400 || t.coefficient instanceof Series || !isRational(t.exponent) || t.exponent.den !== 1n || t.exponent.num < 0n) throw refuse();
-    if (!isZero(c, t.coefficient)) found.push({ power: t.exponent.num, coefficient: t.coefficient });
-  }
 }
 
 /** The integral of coefficient(v) times the weight over the interval. */

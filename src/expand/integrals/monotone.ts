@@ -1,5 +1,5 @@
 /** Proofs from the form of a tree that it is positive, regular or monotone on an open interval. Null or false means "not proven". */
-import { dependsOn, type Expression, Q } from '../../expression/index.ts';
+import { dependsOn, type Expression, Q, substitute } from '../../expression/index.ts';
 import type { Field } from '../../algebra/types.ts';
 
 /** Open interval of v; `low` and `high` are trees, null for an infinite end. */
@@ -33,6 +33,17 @@ const pi: Expression = { kind: 'constant', name: 'pi' };
 const halfPi: Expression = { kind: 'quotient', numerator: pi, denominator: { kind: 'number', value: Q.rational(2) } };
 const isVariable = (r: Range, e: Expression): boolean => e.kind === 'symbol' && e.name === r.variable;
 
+/** Of a monotone function from its value at the end where it is least in size. */
+function signByEnds(r: Range, e: Expression): 1 | -1 | null {
+  const direction = directionOn(r, e);
+  if (direction === null) return null;
+  const at = (end: Expression | null): 1 | -1 | 0 | null => (end === null ? null : signOfConstant(r, substitute(e, r.variable, end)));
+  const [least, greatest] = direction === 1 ? [r.low, r.high] : [r.high, r.low];
+  const [below, above] = [at(least), at(greatest)];
+  if (below === 1 || below === 0) return 1;
+  return above === -1 || above === 0 ? -1 : null;
+}
+
 /** Sign on the open interval. */
 export function signOn(r: Range, e: Expression): 1 | -1 | null {
   if (!dependsOn(e, r.variable)) {
@@ -49,7 +60,7 @@ export function signOn(r: Range, e: Expression): 1 | -1 | null {
       const signs = e.terms.map((t) => signOn(r, t));
       if (signs.every((s) => s === 1)) return 1;
       if (signs.every((s) => s === -1)) return -1;
-      return null;
+      return signByEnds(r, e);
     }
     case 'product':
       return e.factors.reduce<1 | -1 | null>((s, f) => (s === null ? null : multiplied(s, signOn(r, f))), 1);

@@ -5,7 +5,7 @@
  * Source: Olver, Asymptotics and Special Functions (1974), ch. 3, sections 3 and 8 (from memory).
  */
 import type { Element } from '../../algebra/types.ts';
-import { build, dependsOn, type Expression, Q, substitute } from '../../expression/index.ts';
+import { build, dependsOn, type Expression, Q, sameExpression, substitute } from '../../expression/index.ts';
 import { Declined } from '../../outcome.ts';
 import {
   add, addElements, beyondAllOrders, compareExponents, type Context, exponential, growth, isRational, isZero, leading, monomialOf, type Multi, multiply, multiplyElements, negate, power, powerTailOf, relativeTail, scaleBy,
@@ -14,6 +14,7 @@ import {
 import { type Direction, openSide } from '../open-side.ts';
 import type { Evaluate, Session } from '../session.ts';
 import { directionOn, type Range, regularOn } from './monotone.ts';
+import { monotonePieces } from './stationary.ts';
 
 /** exp(-lambda(t) phi(v)) g(v) c(t). */
 export interface LaplaceForm {
@@ -48,7 +49,10 @@ export function laplaceForm(body: Expression, v: string, moves: (e: Expression) 
           exponents.push(inverse ? build.negation(e.exponent) : e.exponent);
           return true;
         }
-        return false;
+        if (moves(e.base) || dependsOn(e.exponent, v)) return false;
+        // f(v)^lambda = exp(lambda log f(v)) where f is positive, which the proof that log f is regular shows.
+        exponents.push(build.product(inverse ? build.negation(e.exponent) : e.exponent, build.call('log', e.base)));
+        return true;
       case 'call':
         if (e.function !== 'exp' || !e.args[0]) return false;
         exponents.push(inverse ? build.negation(e.args[0]) : e.args[0]);
@@ -75,7 +79,7 @@ export function laplaceForm(body: Expression, v: string, moves: (e: Expression) 
     const phi: Expression[] = [build.number(negative ? 1 : -1)];
     const split = (f: Expression, inverse: boolean): boolean => {
       const value = inverse ? build.power(f, -1) : f;
-      if (!dependsOn(f, v)) lambda.push(value);
+      if (!dependsOn(f, v) && f.kind !== 'product') lambda.push(value);
       else if (!moves(f)) phi.push(value);
       else if (f.kind === 'product') return f.factors.every((g) => split(g, inverse));
       else if (f.kind === 'quotient') return split(f.numerator, inverse) && split(f.denominator, !inverse);
@@ -90,16 +94,15 @@ export function laplaceForm(body: Expression, v: string, moves: (e: Expression) 
     return true;
   };
   if (!exponents.every((e) => sort(e, false))) return null;
-  const [only] = mixed;
-  if (mixed.length !== 1 || !only) return null;
-  // Constants belong to phi: lambda is what moves.
-  const moving = only.lambda.filter(moves);
-  const constants = only.lambda.filter((f) => !moves(f));
-  return { front: build.product(...front), lambda: build.product(...moving), phi: build.product(...constants, ...only.phi), weight: build.product(...weight) };
+  // Constants belong to phi: lambda is what moves, the same in all terms.
+  const terms = mixed.map((m) => ({ lambda: build.product(...m.lambda.filter(moves)), phi: build.product(...m.lambda.filter((f) => !moves(f)), ...m.phi) }));
+  const [first] = terms;
+  if (!first || !terms.every((t) => sameExpression(t.lambda, first.lambda))) return null;
+  return { front: build.product(...front), lambda: first.lambda, phi: build.sum(...terms.map((t) => t.phi)), weight: build.product(...weight) };
 }
 
 /** The integral over (low, high), null for infinite ends. Throws Declined where the conditions of Watson's lemma are not proven. */
-export function watson(s: Session, form: LaplaceForm, v: string, low: Expression | null, high: Expression | null, evaluate: Evaluate): Multi {
+export function watson(s: Session, form: LaplaceForm, v: string, low: Expression | null, high: Expression | null, evaluate: Evaluate, known: 1 | -1 | null = null): Multi {
   const c = s.context;
   const range: Range = { variable: v, low, high, field: c.field };
   const lambda = evaluate(s, form.lambda);
@@ -113,11 +116,16 @@ export function watson(s: Session, form: LaplaceForm, v: string, low: Expression
     const above = high === null || c.field.sign(c.field.fromExpression(high)) === 1;
     return below && above && dependsOn(e, v);
   };
-  const direction = directionOn(range, phi);
+  const direction = known ?? directionOn(range, phi);
   if (direction === null && contains(phi)) {
     const zero = build.number(0);
     const turned = { ...form, phi, lambda: positive ? form.lambda : build.negation(form.lambda) };
     return add(c, watson(s, turned, v, low, zero, evaluate), watson(s, turned, v, zero, high, evaluate));
+  }
+  const pieces = direction === null ? monotonePieces(s, range, phi, evaluate) : null;
+  if (pieces) {
+    const turned = { ...form, phi, lambda: positive ? form.lambda : build.negation(form.lambda) };
+    return pieces.map((p) => watson(s, turned, v, p.low, p.high, evaluate, p.direction)).reduce((sum, part) => add(c, sum, part));
   }
   if (direction === null) throw new Declined('no-expansion', 'The exponent of the integrand could not be shown to be monotone between the limits; split the integral at its extremum.');
   const end = direction === 1 ? low : high;

@@ -22,7 +22,7 @@ export type AccuracyVerdict =
   | { readonly kind: 'undecided'; readonly reason: string };
 
 const NUMBER = String.raw`(?:(\d+(?:\.\d+)?|\.\d+)\s*(?:\\times|\\cdot|×|\*|·)\s*10\s*\^\s*\{?\s*([-−]\s*\d+)\s*\}?|10\s*\^\s*\{?\s*([-−]\s*\d+)\s*\}?|(\d+(?:\.\d+)?(?:[eE][-+]?\d+)?|\.\d+(?:[eE][-+]?\d+)?))`;
-const STATED = new RegExp(String.raw`(?:\berrors?\b|\baccura(?:te|cy)\b|\bwithin\b|\bcorrect to\b|\bprecision\b|\bdeviat\w+\b)[^.;\n0-9]{0,50}?${NUMBER}\s*(\\?%|per\s?cent\b)?`, 'i');
+const STATED = new RegExp(String.raw`(?:\berrors?\b|\baccura(?:te|cy)\b|\bwithin\b|\bcorrect to\b|\bprecision\b|\bdeviat\w+\b)(?:(?!\b(?:for|when|if|where|on|digits?|decimals?|places?|figures?)\b)[^.;\n0-9]){0,50}?${NUMBER}\s*(\\?%|per\s?cent\b)?`, 'i');
 
 /** The statement in `text` between two offsets; null where number or interval is missing. */
 export function statementIn(text: string, from: number, to: number, conditions: readonly Expression[], variable: string): Statement | null {

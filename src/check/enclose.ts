@@ -20,11 +20,19 @@ export function enclose(e: Expression): { readonly low: Rational; readonly high:
 /** A double near the value with every symbol at a fixed positive sample; null where there is none. Only to find candidates: nothing is concluded from it. */
 export function sample(e: Expression): number | null {
   if (e.kind === 'number') return Q.toDouble(e.value);
-  const environment = new Map(freeSymbols(e).map((name): [string, Ball] => [name, real.fromRational(sampleOf(name), PRECISION)]));
-  const ball = encloseReal(e, environment, PRECISION, describe);
+  const ball = sampleBall(e);
   if (!ball) return null;
   const value = real.toDouble(ball);
   return Number.isFinite(value) ? value : null;
+}
+
+const sampleBall = (e: Expression): Ball | null => encloseReal(e, new Map(freeSymbols(e).map((name): [string, Ball] => [name, real.fromRational(sampleOf(name), PRECISION)])), PRECISION, describe);
+
+/** The enclosure at the sample holds zero: a claim is not refuted by a coefficient that may vanish there by a relation not known to the exact test. */
+export function mayVanish(e: Expression): boolean {
+  if (e.kind === 'number') return false;
+  const ball = sampleBall(e);
+  return ball !== null && (ball.mid < 0n ? -ball.mid : ball.mid) <= ball.rad;
 }
 
 /** A positive rational between 1/2 and 3/2 made from the letters of the name. */

@@ -215,7 +215,9 @@ export const orIn = (absent: readonly string[] | undefined): string => (absent?.
 
 /** Symbols of the printed side that the function does not hold. */
 function unknownSymbols(f: Expression, side: Expression, setting: Setting): readonly string[] {
-  return freeSymbols(withoutMarks(side)).filter((name) => name !== setting.variable && !dependsOn(f, name));
+  // How far a sum goes is no quantity of the function.
+  const open = (e: Expression): Expression => (e.kind === 'indexedSum' && e.upper.kind === 'symbol' && !dependsOn(e.body, e.upper.name) ? { ...e, upper: build.constant('infinity') } : mapChildren(e, open));
+  return freeSymbols(open(withoutMarks(side))).filter((name) => name !== setting.variable && !dependsOn(f, name));
 }
 
 /** i or j read as a symbol on both sides may be the imaginary unit. */

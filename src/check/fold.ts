@@ -3,6 +3,7 @@ import { build, mapChildren, Q, type Expression, type Rational } from '../expres
 
 const LARGEST_FACTORIAL = 200n;
 const LARGEST_POWER = 400n;
+const LARGEST_BINOMIAL = 60n;
 
 /** The tree with every purely numeric part computed, and factors 1 and terms 0 left out. A division by zero stays as it stands. */
 export function fold(e: Expression): Expression {
@@ -19,11 +20,25 @@ export function fold(e: Expression): Expression {
     }
     case 'power':
       return inner.exponent.kind === 'number' && Q.isOne(inner.exponent.value) ? inner.base : inner.exponent.kind === 'number' && Q.isZero(inner.exponent.value) ? build.number(1) : inner;
+    case 'call':
+      return fallingBinomial(inner.function, inner.args) ?? inner;
     case 'sum':
       return build.sum(...inner.terms.filter((t) => !(t.kind === 'number' && Q.isZero(t.value))));
     default:
       return inner;
   }
+}
+
+/** A binomial coefficient with a whole lower index as a polynomial in the upper one (DLMF 1.2.6). */
+function fallingBinomial(id: string, [upper, lower]: readonly Expression[]): Expression | null {
+  if (id !== 'binomial' || !upper || lower?.kind !== 'number' || !Q.isInteger(lower.value) || lower.value.num < 0n || lower.value.num > LARGEST_BINOMIAL) return null;
+  const factors: Expression[] = [];
+  let factorial = 1n;
+  for (let j = 0n; j < lower.value.num; j += 1n) {
+    factors.push(j === 0n ? upper : build.sum(upper, build.number(Q.rational(-j))));
+    factorial *= j + 1n;
+  }
+  return fold(build.quotient(build.product(build.number(1), ...factors), build.number(Q.rational(factorial))));
 }
 
 function valueOf(e: Expression): Rational | null {

@@ -2,6 +2,7 @@
 import { build, dependsOn, Q, walk, type Expression, type Relation } from '../expression/index.ts';
 import type { Setting } from './context.ts';
 import { absorbDecimals } from './decimals.ts';
+import { mayVanish } from './enclose.ts';
 import { compare, compareSizes, leading, type Leading, type Size } from './size.ts';
 import { hasMarks, lastKept, takeApart, type PrintedTerm, type Truncated } from './truncated.ts';
 
@@ -44,6 +45,7 @@ export function judge(f: Expression, side: Expression, relation: Relation, setti
   if (lead.kind === 'undecided') return { kind: 'undecided', reason: lead.reason, needsTime: lead.needsTime };
   if (lead.kind === 'zero') return identity(truncated, relation, leftMarked);
   const verdict = truncated.scale ? againstScale(truncated, truncated.scale, difference, setting) : againstLast(truncated, truth, difference, lead, setting);
+  if (verdict.kind === 'fails' && lead.kind === 'monomial' && mayVanish(lead.coefficient)) return { kind: 'undecided', reason: 'Numerically the first coefficient of the difference is zero, but this is not proved.', needsTime: false };
   if (verdict.kind === 'holds' && leftMarked) return withLeftMark(leftMarked, truncated, verdict, setting);
   if (verdict.kind === 'fails' && leftMarked && !refutes(leftMarked, lead, setting)) return { kind: 'undecided', reason: 'The left side is itself cut off before the terms that would decide it.', needsTime: false };
   if (verdict.kind === 'holds' && truncated.mark === 'none' && relation === '=') return { ...verdict, hint: { kind: 'approximation' } };

@@ -180,3 +180,19 @@ describe('tolerances stated beside a claim', () => {
     expect(failure ? text.slice(failure.start, failure.end) : null).toBe(under);
   });
 });
+
+describe('sums with parameters and stated digits', () => {
+  const at = { variable: 'x' };
+  it('a sum that ends at a symbol is judged by its terms (DLMF 4.6.7, 4.19.1)', () => {
+    expect(verdictOf(findings('\\frac{\\sin x}{x} = \\sum_{i=0}^{n} \\frac{(-1)^i}{(2i+1)!} x^{2i}', at))).toBe('holds');
+    expect(verdictOf(findings('\\frac{\\sin x}{x} = \\sum_{i=0}^{n} \\frac{(-1)^i}{(2i)!} x^{2i}', at))).toBe('fails');
+  });
+  it('the binomial series with binomials or gamma functions never fails (DLMF 4.6.7)', () => {
+    expect(verdictOf(findings('$(1+x)^{\\alpha} = \\sum_{k=0}^\\infty \\binom{\\alpha}{k} x^k$, $|x| < 1$', at))).not.toBe('fails');
+    expect(verdictOf(findings('$(1+x)^\\alpha = 1 + \\frac{\\Gamma(\\alpha+1)}{\\Gamma(\\alpha)} x + \\cdots$', at))).not.toBe('fails');
+    expect(verdictOf(findings('$(1+x)^{\\alpha} = \\sum_{k=0}^\\infty \\binom{\\alpha}{k} \\frac{x^k}{k!}$, $|x| < 1$', at))).toBe('fails');
+  });
+  it('digits in words are not a bound of 1', () => {
+    expect(findings('$\\cos x \\approx 1 - x^2/2$, correct to three decimal places for $|x| < 1$.', at).map((f) => f.reason).join(' ')).not.toContain('error on this interval');
+  });
+});

@@ -33,6 +33,8 @@ export interface Context {
   readonly call: (id: string, args: readonly Element[]) => Element;
   /** Sign of an element without parameters by balls; null where it stays open or is not real. */
   readonly signOfNumber: (a: Element) => -1 | 1 | null;
+  /** Sign of the real part of an element without parameters by balls; null where it stays open. */
+  readonly signOfRealPart: (a: Element) => -1 | 1 | null;
   /** Whether the assumptions make the symbol an integer. */
   readonly isInteger: (name: string) => boolean;
 }

@@ -280,8 +280,8 @@ function arcHyperbolicSine(ctx: Context, a: Element): Element {
 }
 function arcHyperbolicCosine(ctx: Context, a: Element): Element {
   const root = (shift: Rational): Element => sqrt(ctx, plus(ctx, a, shift));
-  // i acos(a) between -1 and 1: purely imaginary by its form.
-  if (isNumber(ctx, a) && ctx.signs.of(plus(ctx, Q.ONE, negateElement(squared(ctx, a)))) === POSITIVE) return times(ctx, kernelElement(ctx, imaginaryKernel(ctx)), arcCosine(ctx, a));
+  // i acos(a) between -1 and 1: purely imaginary by its form. An imaginary a has 1 - a^2 > 0, too.
+  if (isNumber(ctx, a) && isRealSet(ctx.signs.of(a)) && ctx.signs.of(plus(ctx, Q.ONE, negateElement(squared(ctx, a)))) === POSITIVE) return times(ctx, kernelElement(ctx, imaginaryKernel(ctx)), arcCosine(ctx, a));
   if (isNumber(ctx, a)) return logarithm(ctx, plus(ctx, a, times(ctx, root(Q.MINUS_ONE), root(Q.ONE))));
   return opaque(ctx, 'acosh', [a]);
 }

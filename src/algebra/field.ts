@@ -53,6 +53,16 @@ export function createField(assumptions: readonly Assumption[], budget: Budget, 
       const s = constantSign(a);
       return s === POSITIVE ? 1 : s === NEGATIVE ? -1 : null;
     },
+    signOfRealPart(a) {
+      if (!isConstant(a)) return null;
+      for (const precision of SIGN_PRECISIONS) {
+        const z = zero.enclose(a, precision);
+        if (!z && precision > 64) return null;
+        const s = z && signOfBall(z);
+        if (s !== null) return s;
+      }
+      return null;
+    },
   };
 
   /** log and call kernels: by balls where they are constants, by their arguments' signs where a rule is known. */

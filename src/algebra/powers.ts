@@ -194,6 +194,12 @@ function openPower(ctx: Context, base: Element, r: Rational, exponent: Exponent)
     const outside = rationalPower(ctx, absolute(ctx, bottom), Q.multiply(r, Q.rational(-2)));
     return times(ctx, outside, rationalPower(ctx, top, r));
   }
+  if (r.den === 2n && isQuotient(bottom)) {
+    // One of the two square roots of N/D is (N D)^(1/2)/D; the principal one has a positive real part.
+    const root = divideElements(ctx, radicandPower(ctx, times(ctx, base, times(ctx, bottom, bottom)), exponentFromRational(Q.HALF)), bottom);
+    const sign = ctx.signOfRealPart(root);
+    if (sign) return wholePower(ctx.table, sign === 1 ? root : negateElement(root), Number(r.num));
+  }
   return kernelElement(ctx, powerKernel(ctx, base, Q.ONE), exponent);
 }
 

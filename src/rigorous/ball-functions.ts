@@ -464,7 +464,8 @@ export function asinh(x: Ball, precision: number): Ball | null {
 /** Null unless every number of the ball is at least 1. */
 export function acosh(x: Ball, precision: number): Ball | null {
   const exact = (y: Ball, p: number): Ball | null => {
-    const work = p + bitLength(y.mid) + Math.max(0, y.exp) + 64;
+    // Only beside 1 does y - 1 lose bits.
+    const work = p + (exponentOf(y) > 2 ? 0 : bitLength(y.mid)) + 64;
     const above = subtract(y, ONE, work);
     if (above.mid < 0n) return null;
     if (above.mid === 0n) return ZERO;

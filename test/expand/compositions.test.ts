@@ -2,6 +2,9 @@
 import { describe, expect, test } from 'vitest';
 import { expectExpansion, expansionOf, latex, outcomeOf, plain, same } from './tools.ts';
 import { partialSum } from '../../src/expand/index.ts';
+import { build } from '../../src/expression/index.ts';
+import { describe as describeFunction } from '../../src/functions/index.ts';
+import { complex, enclose } from '../../src/rigorous/index.ts';
 
 describe('what cancels by form is gone', () => {
   test('a constant written with the variable stays a constant', () => {
@@ -71,4 +74,25 @@ test('a function is not expanded towards its cut by the form that holds on it: E
   const found = outcomeOf(latex('\\operatorname{Ei}\\left(\\operatorname{Li}_2(x)\\right)'), { at: 'inf' });
   expect(found.ok).toBe(false);
   if (!found.ok) expect(found.error.code).toBe('no-expansion');
+});
+
+describe('values on the imaginary axis and of complex constants', () => {
+  const contains = (difference: ReturnType<typeof build.difference>): boolean => {
+    const ball = enclose(difference, new Map(), 200, describeFunction);
+    return ball !== null && complex.containsZero(ball);
+  };
+  // arcosh(-i) = log(1 + sqrt 2) - i pi/2, the principal value of DLMF 4.37.19.
+  test('arcosh(-i x) at 1', () => {
+    const found = expansionOf('\\operatorname{arcosh}(-ix)', { at: '1', terms: 1 });
+    expect(contains(build.difference(found.terms[0]?.coefficient ?? build.number(0), plain('log(1 + sqrt(2)) - i*pi/2')))).toBe(true);
+  });
+  // A root of -1/a^2 is i/a or -i/a: as a kernel of its own it would hide a zero, and the term in 1/x would be lost.
+  test('arccos of a quotient by a complex constant keeps its terms or is declined', () => {
+    const found = outcomeOf(latex('\\arccos\\frac{2x^2+x}{\\operatorname{arcosh}(\\tan 2)}'), { at: 'inf', terms: 3 });
+    if (found.ok) expect(found.value.terms.map((t) => (t.power.kind === 'number' ? Number(t.power.value.num) : NaN))).toEqual([0, 0, 1]);
+    else expect(found.error.code).toBe('undecided');
+  });
+  test('the square of a root of -1/a^2 for a complex constant a', () => {
+    expect(same(plain('acosh(tan(2))^2*sqrt(-1/acosh(tan(2))^2)^2'), plain('-1'))).toBe(true);
+  });
 });

@@ -90,7 +90,7 @@ export function termsNeededFor(problem: NeededProblem, tolerance: Rational): Ter
   let best: { terms: number; bound: RemainderBound } | null = null;
   let smallest: { terms: number; size: number } = { terms: 1, size: Infinity };
   let refuted = true;
-  let unbounded: { readonly result: RemainderBound; readonly count: number } | null = null;
+  let unbounded = 0;
   /** Numbers of terms that are neither proven to serve nor refuted. */
   const undecided: number[] = [];
   const sizes: number[] = [];
@@ -104,9 +104,9 @@ export function termsNeededFor(problem: NeededProblem, tolerance: Rational): Ter
       const result = decided(boundOf, n, tolerance);
       if (result.upperRational === null) {
         if (isSingularForEverySum(expansion, result, problem.measure)) return { terms: null, reason: SINGULAR };
-        unbounded = { result, count: (unbounded?.count ?? 0) + 1 };
+        unbounded += 1;
         // Poles at the point go away with as many terms as their order; elsewhere a few more terms are tried.
-        if (!poleAtPoint(expansion) && unbounded.count >= MOST_UNBOUNDED) return { terms: null, reason: unboundedUpTo(n, problem.measure, undecided) };
+        if (!poleAtPoint(expansion) && unbounded >= MOST_UNBOUNDED) return { terms: null, reason: unboundedUpTo(n, problem.measure, undecided) };
         continue;
       }
       if (Q.compare(result.upperRational, tolerance) <= 0) return { terms: n, expansion, bound: result, minimal: n === 1 || refuted };
@@ -130,7 +130,7 @@ export function termsNeededFor(problem: NeededProblem, tolerance: Rational): Ter
   }
   if (smallest.terms >= MOST_TERMS - 5) return { terms: null, reason: 'slow', estimate: 2 * MOST_TERMS };
   const tried = sizes.length - 1;
-  if (unbounded && tried < 1) return { terms: null, reason: unboundedUpTo(unbounded.count, problem.measure, undecided) };
+  if (unbounded > 0 && tried < 1) return { terms: null, reason: unboundedUpTo(unbounded, problem.measure, undecided) };
   const last = bestOf(best, smallest.terms, boundOf);
   return { terms: null, reason: `${refutedUpTo(tried, undecided)} For more terms nothing is proved.`, ...(last.bound.value === null ? {} : { best: { terms: last.terms, bound: last.bound.value } }) };
 }

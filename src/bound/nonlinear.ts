@@ -29,7 +29,9 @@ const inverseErf: Recurrence = (value, count, work) => {
   const half = real.scaleByPowerOfTwo(real.sqrt(real.pi(work), work) ?? real.ONE, -1);
   const f = [value];
   const q = [real.multiply(value, value, work)];
-  const e = [real.exp(q[0] ?? real.ZERO, work)];
+  const start = real.exp(q[0] ?? real.ZERO, work);
+  if (start === null) return null;
+  const e = [start];
   for (let n = 0; n + 1 < count; n += 1) {
     f.push(real.divide(real.multiply(half, e[n] ?? real.ZERO, work), real.fromInteger(n + 1), work) ?? real.ZERO);
     q.push(convolution(f, f, n + 1, work));
@@ -41,8 +43,10 @@ const inverseErf: Recurrence = (value, count, work) => {
 /** P f' = 1 with P = (1 + f) e^f (DLMF 4.13.1 differentiated). */
 const lambert: Recurrence = (value, count, work) => {
   const f = [value];
-  const e = [real.exp(value, work)];
-  const p = [real.multiply(real.add(real.ONE, value, work), e[0] ?? real.ONE, work)];
+  const start = real.exp(value, work);
+  if (start === null) return null;
+  const e = [start];
+  const p = [real.multiply(real.add(real.ONE, value, work), start, work)];
   const lead = p[0] ?? real.ZERO;
   if (real.containsZero(lead)) return null;
   for (let n = 0; n + 1 < count; n += 1) {

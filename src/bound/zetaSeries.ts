@@ -4,6 +4,7 @@
  * |R| <= |s + 2M + 1|/(Re s + 2M + 1) |term M + 1| (Backlund's estimate, from memory; Edwards, Riemann's Zeta Function, 6.4).
  */
 import { Q } from '../expression/index.ts';
+import { Declined } from '../outcome.ts';
 import { type Ball, real } from '../rigorous/index.ts';
 import type { RealSeries } from './holonomic.ts';
 
@@ -21,9 +22,15 @@ const weightOf = (k: number): { readonly num: bigint; readonly den: bigint } => 
 const isZero = (x: Ball): boolean => x.mid === 0n && x.rad === 0n;
 const up = (x: Ball): Ball => real.upperEnd(real.absolute(x));
 
+function exp(x: Ball, bits: number): Ball {
+  const value = real.exp(x, bits);
+  if (value === null) throw new Declined('undecided', 'The zeta function could not be bounded so far out; choose a smaller interval.');
+  return value;
+}
+
 /** N^x upwards. */
 function powerOf(N: number, x: Ball, bits: number): Ball {
-  return N === 1 ? real.ONE : real.exp(real.multiply(x, real.log(real.fromInteger(N), bits) ?? real.ZERO, bits), bits);
+  return N === 1 ? real.ONE : exp(real.multiply(x, real.log(real.fromInteger(N), bits) ?? real.ZERO, bits), bits);
 }
 
 /** |s (s+1) ... (s+m-1)| upwards for |s| <= size. */
@@ -59,7 +66,7 @@ function entireSize(centre: Ball, radius: Ball): Ball | null {
   // |(e^(-L u) - 1)/u| <= L e^(L |u|).
   const L = real.log(real.fromInteger(N), BOUND_BITS) ?? real.ZERO;
   const u = real.upperEnd(real.add(real.absolute(real.subtract(centre, real.ONE, BOUND_BITS)), radius, BOUND_BITS));
-  sum = real.add(sum, real.multiply(L, real.exp(real.multiply(L, u, BOUND_BITS), BOUND_BITS), BOUND_BITS), BOUND_BITS);
+  sum = real.add(sum, real.multiply(L, exp(real.multiply(L, u, BOUND_BITS), BOUND_BITS), BOUND_BITS), BOUND_BITS);
   sum = real.add(sum, powerOf(N, real.negate(low), BOUND_BITS), BOUND_BITS);
   for (let k = 1; k <= M; k += 1) sum = real.add(sum, termSize(size, low, N, k), BOUND_BITS);
   return up(sum);
@@ -95,10 +102,10 @@ export function zetaSeries(centre: Ball, reach: Ball, precision: number, length:
   };
   for (let n = 2; n < N; n += 1) {
     const L = real.log(real.fromInteger(n), work) ?? real.ZERO;
-    exponential(L, real.exp(real.negate(real.multiply(centre, L, work)), work)).forEach((x, k) => add(k, x));
+    exponential(L, exp(real.negate(real.multiply(centre, L, work)), work)).forEach((x, k) => add(k, x));
   }
   const L = real.log(real.fromInteger(N), work) ?? real.ZERO;
-  const last = exponential(L, real.exp(real.negate(real.multiply(centre, L, work)), work));
+  const last = exponential(L, exp(real.negate(real.multiply(centre, L, work)), work));
   if (atPole) {
     // (e^(-L d) - 1)/d.
     exponential(L, real.ONE).forEach((x, k) => {

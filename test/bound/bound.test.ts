@@ -1,4 +1,4 @@
-/** Bounds of remainders: known closed forms, refusals, terms needed, and a small version of the random run (violations.ts). */
+/** Bounds of remainders: known closed forms, refusals, terms needed. */
 import { describe, expect, test } from 'vitest';
 import { build, type Expression, Q, type Rational } from '../../src/expression/index.ts';
 import { boundRemainder, ladder, type Measure, type NeededProblem, reachFor, type RemainderBound, termsNeeded, valueAt } from '../../src/bound/index.ts';
@@ -7,8 +7,6 @@ import { budget } from '../../src/outcome.ts';
 import { readExact } from '../../src/read/index.ts';
 import { encloseReal, real } from '../../src/rigorous/index.ts';
 import { describe as describeFunction } from '../../src/functions/index.ts';
-import { generator } from '../rigorous/random.ts';
-import { judge, randomSetting } from './sampling.ts';
 
 const x = build.symbol('x');
 function exact(text: string): Expression {
@@ -148,18 +146,4 @@ test('value at an argument', () => {
   // sin 0.3 = 0.295520206661339575... (Abramowitz & Stegun, table 4.6; from memory, checked with MPFR).
   expect(value.value.value.low.startsWith('0.29552020666')).toBe(true);
   expect(Number(value.value.percentage?.high)).toBeCloseTo(0.00683765809718, 10);
-});
-
-test('random bounds hold at 50 samples each', () => {
-  const random = generator(20261201);
-  let held = 0;
-  for (let i = 0; i < 30; i += 1) {
-    const trial = judge(randomSetting(random), random, 1000);
-    if (trial.outcome === 'violated') throw new Error(trial.text);
-    if (trial.outcome === 'held') {
-      held += 1;
-      if (Number.isFinite(trial.lowerRatio)) expect(trial.lowerRatio).toBeLessThan(1.0005);
-    }
-  }
-  expect(held).toBeGreaterThan(15);
 });

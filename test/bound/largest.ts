@@ -1,12 +1,12 @@
-/** The largest |f - sum| (or of its ratio to f) over an interval, by dense sampling in 256-bit balls and a search around the largest sample: what a bound is measured against. */
+/** The largest |f - sum| (or of its ratio to f) over an interval, by dense sampling in 192-bit balls and a search around the largest sample: what a bound is measured against. */
 import { type Expression, Q } from '../../src/expression/index.ts';
 import { type Expansion, partialSum } from '../../src/expand/index.ts';
 import { describe } from '../../src/functions/index.ts';
 import type { Measure } from '../../src/bound/index.ts';
 import { type Ball, encloseReal, real } from '../../src/rigorous/index.ts';
 
-const BITS = 256;
-const GRID = 24;
+const BITS = 192;
+const GRID = 20;
 const NARROWINGS = 12;
 
 /** f - sum (or the ratio) at x; null where undefined. */

@@ -1,6 +1,6 @@
 /**
  * How near bounds come to the truth, over a table of all kinds of questions: data/tightness.json names the source of each expansion (sections of DLMF) or says that there is none.
- * The true maximum is found by dense sampling in 256-bit balls (largest.ts), whose functions are themselves judged by MPFR in test/rigorous and test/functions.
+ * The true maximum is found by dense sampling in 192-bit balls (largest.ts), whose functions are themselves judged by MPFR in test/rigorous and test/functions.
  */
 import { readFileSync } from 'node:fs';
 import { afterAll, describe, expect, test } from 'vitest';

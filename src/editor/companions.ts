@@ -14,6 +14,8 @@ interface Gathered {
   readonly references: string;
   readonly at: number;
   readonly files: Promise<readonly CompanionFile[]>;
+  /** Of the files found; empty until they are. */
+  readonly paths: Set<string>;
 }
 
 const PATTERN = '**/*.{tex,ltx,sty,cls,def,cfg,inc,macros,latex}';
@@ -26,7 +28,11 @@ const NONE: Promise<readonly CompanionFile[]> = Promise.resolve([]);
 export class Companions implements vscode.Disposable {
   readonly #gathered = new Map<string, Gathered>();
   readonly #listeners: vscode.Disposable[] = [];
+  readonly #changes = new vscode.EventEmitter<readonly string[]>();
   #generation = 0;
+
+  /** Addresses of the documents that refer to a file that changed. */
+  readonly onDidChange = this.#changes.event;
 
   /** Rises when a file that was handed over may have changed. */
   get generation(): number {
@@ -41,12 +47,19 @@ export class Companions implements vscode.Disposable {
     const known = this.#gathered.get(key);
     if (known && known.references === references && Date.now() - known.at < KEPT_MS) return known.files;
     const folder = folderOf(uri.path);
-    const files = companionsOf({ path: uri.path, text, language }, (path) => read(uri, path)).then((found) => found.map(({ name, text: content }) => ({ name: name.startsWith(`${folder}/`) ? name.slice(folder.length + 1) : name, text: content })));
-    this.#gathered.set(key, { references, at: Date.now(), files });
+    const paths = new Set<string>();
+    const files = companionsOf({ path: uri.path, text, language }, (path) => read(uri, path)).then((found) =>
+      found.map(({ name, text: content }) => {
+        paths.add(name);
+        return { name: name.startsWith(`${folder}/`) ? name.slice(folder.length + 1) : name, text: content };
+      }),
+    );
+    this.#gathered.set(key, { references, at: Date.now(), files, paths });
     return files;
   }
 
   dispose(): void {
+    this.#changes.dispose();
     for (const listener of this.#listeners) listener.dispose();
   }
 
@@ -55,23 +68,28 @@ export class Companions implements vscode.Disposable {
     if (this.#listeners.length > 0) return;
     const watcher = vscode.workspace.createFileSystemWatcher(PATTERN);
     const changed = (uri: vscode.Uri): void => this.#changed(uri);
+    // A file that appears may be the one that was missing.
+    const appeared = (uri: vscode.Uri): void => this.#changed(uri, true);
     this.#listeners.push(
       watcher,
       watcher.onDidChange(changed),
-      watcher.onDidCreate(changed),
+      watcher.onDidCreate(appeared),
       watcher.onDidDelete(changed),
       vscode.workspace.onDidChangeTextDocument(({ document, contentChanges }) => contentChanges.length > 0 && ENDING.test(document.uri.path) && this.#changed(document.uri)),
     );
   }
 
   /** What the document itself says is not among its own companions: typing in it keeps them. */
-  #changed(uri: vscode.Uri): void {
+  #changed(uri: vscode.Uri, anywhere = false): void {
     const own = uri.toString();
-    for (const key of [...this.#gathered.keys()]) {
+    const concerned: string[] = [];
+    for (const [key, { paths }] of [...this.#gathered]) {
       if (key === own) continue;
+      if (anywhere || paths.has(uri.path)) concerned.push(key);
       this.#gathered.delete(key);
       this.#generation += 1;
     }
+    if (concerned.length > 0) this.#changes.fire(concerned);
   }
 }
 

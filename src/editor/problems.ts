@@ -48,6 +48,9 @@ export class Problems implements vscode.Disposable {
       vscode.workspace.onDidChangeTextDocument(({ document, contentChanges }) => contentChanges.length > 0 && this.#schedule.changed(document)),
       vscode.workspace.onDidSaveTextDocument((document) => this.#soon(document)),
       vscode.workspace.onDidCloseTextDocument((document) => this.#forget(document)),
+      services.companions.onDidChange((owners) => {
+        for (const document of vscode.workspace.textDocuments) if (owners.includes(document.uri.toString())) this.#schedule.changed(document);
+      }),
     );
     for (const document of vscode.workspace.textDocuments) this.#soon(document);
   }

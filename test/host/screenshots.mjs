@@ -35,14 +35,7 @@ const SCENES = {
 
 SCENES.hover = async (page) => {
   await select(page, NOTE, SAG);
-  const picture = page.locator('.monaco-hover img[src^="data:image/svg"]:visible').first();
-  // On a cold start the text comes first, without the picture.
-  for (let i = 0; i < 8 && !(await picture.isVisible()); i += 1) {
-    await closeHover(page);
-    await hoverAtCursor(page, 'u³/24');
-    await picture.waitFor({ timeout: 1500 }).catch(() => {});
-  }
-  await pause(400);
+  await hoverWithPicture(page, 'u³/24');
   return around(page, '.monaco-hover:visible', { left: 60, top: 24, right: 60, bottom: 60, width: 620 });
 };
 SCENES.fixes = async (page) => {
@@ -60,10 +53,22 @@ SCENES.problems = async (page) => {
   await page.locator('.squiggly-warning').first().waitFor({ timeout: 30_000 });
   const at = placeOf(NOTE, '620');
   await goTo(page, at.line, at.column + 1);
-  await hoverAtCursor(page, '720');
-  await pause(400);
+  // A hover takes a quarter of the editor's height at most.
+  await page.setViewportSize({ width: 1120, height: 1500 });
+  await hoverWithPicture(page, '720');
   return around(page, '.monaco-hover:visible', { left: 60, top: 40, right: 60, bottom: 60, width: 620 });
 };
+
+/** On a cold start the text comes first, without table and picture. */
+async function hoverWithPicture(page, wanted) {
+  const picture = page.locator('.monaco-hover img[src^="data:image/svg"]:visible').first();
+  for (let i = 0; i < 8 && !(await picture.isVisible()); i += 1) {
+    await closeHover(page);
+    await hoverAtCursor(page, wanted);
+    await picture.waitFor({ timeout: 1500 }).catch(() => {});
+  }
+  await pause(400);
+}
 
 SCENES.claims = async (page) => {
   await page.setViewportSize({ width: 1120, height: 900 });

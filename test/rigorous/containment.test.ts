@@ -97,3 +97,9 @@ test('poles and ends of the domain are refused, not guessed', () => {
   expect(real.asin(real.fromDouble(1.0000001), 64)).toBeNull();
   expect(real.acosh(real.fromDouble(0.9999999), 64)).toBeNull();
 });
+
+test('arcosh of 3 2^(10^9) is log 6 + 10^9 log 2 to its last bit', () => {
+  const value = real.acosh({ mid: 3n, rad: 0n, exp: 1e9 }, 128);
+  const expected = real.add(real.log(real.fromInteger(6), 160) ?? real.ZERO, real.multiply(real.fromInteger(1e9), real.log(real.fromInteger(2), 160) ?? real.ZERO, 160), 160);
+  expect(value !== null && real.overlaps(value, expected)).toBe(true);
+});

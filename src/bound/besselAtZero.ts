@@ -1,6 +1,6 @@
 /** Bessel functions at zero: the power series of DLMF 10.2.2, 10.25.2 and, for whole orders, 10.8.1 and 10.31.1, with the rest of each series bounded by the ratio of its terms. */
-import { build, type Expression, Q } from '../expression/index.ts';
-import { type Model, type ModelArithmetic, rationalOf } from '../rigorous/index.ts';
+import { build, type Expression, Q, rationalOf } from '../expression/index.ts';
+import { type Model, type ModelArithmetic } from '../rigorous/index.ts';
 import type { Numbers } from './numbers.ts';
 
 const { call, constant, number, power, product, quotient, sum } = build;

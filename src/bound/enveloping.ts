@@ -6,8 +6,8 @@
  * Of either sign: Ei for x > 0, 1 + chi(n+1) times the next term (6.12(i)); I_nu for x > 0, 2 chi(l) exp(|nu^2 - 1/4| chi(1)/x) times it (10.40(iii) on ph z = pi, from memory),
  * with chi(n) < sqrt(pi (n+1)/2) (9.7(i) and the quotient of Gamma functions half a unit apart).
  */
-import { type Expression, Q, type Rational } from '../expression/index.ts';
-import { type Model, type ModelArithmetic, rationalOf, real } from '../rigorous/index.ts';
+import { type Expression, Q, type Rational, rationalOf } from '../expression/index.ts';
+import { type Model, type ModelArithmetic, real } from '../rigorous/index.ts';
 import type { Numbers } from './numbers.ts';
 import { ENVELOPES, type EnvelopeName } from './rewrite.ts';
 

@@ -4,9 +4,9 @@
  * d^(r) = -sum (p_j/p_r) d^(j) - residual/p_r, so |d| is at most the solution of v^(r) = sum A_j v^(j) + rho |s|^(K-r) with the same start, A_j = max |p_j/p_r|
  * (comparison of Volterra equations with nonnegative kernels). Also the hypergeometric series at zero with the rest bounded by the ratio of its terms.
  */
-import { build, type Expression, Q, type Rational } from '../expression/index.ts';
+import { build, type Expression, Q, type Rational, rationalOf } from '../expression/index.ts';
 import { describe } from '../functions/index.ts';
-import { type Ball, encloseReal, rationalOf, real } from '../rigorous/index.ts';
+import { type Ball, encloseReal, real } from '../rigorous/index.ts';
 
 export interface RealSeries {
   readonly coefficients: readonly Ball[];

@@ -1,9 +1,9 @@
 /** Models of f, of the sum and of the remainder on a segment. */
-import { build, type Expression, Q, type Rational, substitute } from '../expression/index.ts';
+import { build, type Expression, Q, type Rational, rationalOf, substitute } from '../expression/index.ts';
 import { type Expansion, partialSum } from '../expand/index.ts';
 import { describe } from '../functions/index.ts';
 import { Declined } from '../outcome.ts';
-import { type LogModel, logModelOfTree, type Model, type ModelArithmetic, modelArithmetic, rationalOf } from '../rigorous/index.ts';
+import { type LogModel, logModelOfTree, type Model, type ModelArithmetic, modelArithmetic } from '../rigorous/index.ts';
 import type { Numbers } from './numbers.ts';
 import { isExactlyZero, normalForm, type Segment } from './region.ts';
 import { besselSeriesModel } from './besselAtZero.ts';

@@ -1,8 +1,8 @@
 /** Ladder of terms against bound, the least number of terms for a tolerance, and how far from the point a tolerance can be kept. */
-import { build, type Assumption, type Expression, freeSymbols, Q, type Rational } from '../expression/index.ts';
+import { type Assumption, build, type Expression, freeSymbols, Q, type Rational, rationalOf } from '../expression/index.ts';
 import { type Expansion, prefix } from '../expand/index.ts';
 import { budget, type Budget, Declined, success } from '../outcome.ts';
-import { type Ball, encloseReal, rationalOf, real } from '../rigorous/index.ts';
+import { type Ball, encloseReal, real } from '../rigorous/index.ts';
 import { describe } from '../functions/index.ts';
 import { fittedDegreeOf } from './fitted.ts';
 import { isPowerSum, sumOf } from './local.ts';

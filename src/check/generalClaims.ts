@@ -1,12 +1,12 @@
 /** Claims with a general term: a sum over an index, or a term in n between dots. Refuted by their first terms, confirmed only by proof. */
-import { build, dependsOn, freeSymbols, mapChildren, Q, walk, type Expression, type IndexedNode, type Relation, type Span } from '../expression/index.ts';
+import { build, dependsOn, type Expression, freeSymbols, type IndexedNode, literalRational, mapChildren, Q, type Relation, type Span, walk } from '../expression/index.ts';
 import type { Setting } from './context.ts';
 import { differentiate } from '../functions/index.ts';
 import { replaceNode } from './decimals.ts';
 import { fold, isUndefined } from './fold.ts';
 import { atIndex, generalTermOf, isProved } from './generalTerm.ts';
 import { judge } from './judge.ts';
-import { leading, numberOf, type Size } from './size.ts';
+import { leading, type Size } from './size.ts';
 import { printedTerms, withoutMarks } from './truncated.ts';
 
 export type GeneralJudgement =
@@ -59,7 +59,7 @@ export function judgeGeneral(f: Expression, side: Expression, relation: Relation
 }
 
 function judgeSum(f: Expression, side: Expression, relation: Relation, sum: IndexedNode, index: string, setting: Setting): GeneralJudgement {
-  const lower = numberOf(sum.lower);
+  const lower = literalRational(sum.lower);
   if (!lower || !Q.isInteger(lower)) return { kind: 'undecided', reason: 'The sum starts at an index that is not a plain number.' };
   const start = Number(lower.num);
   const members: Expression[] = [];

@@ -4,10 +4,9 @@
  * Two power series with the same first terms that satisfy it are equal, since D has no zero at later indices (Stanley 1980, from memory: D-finite series).
  */
 import { createField } from '../algebra/index.ts';
-import { build, dependsOn, Q, substitute, type Expression, type Rational } from '../expression/index.ts';
+import { build, dependsOn, type Expression, literalRational, Q, type Rational, substitute } from '../expression/index.ts';
 import type { Setting } from './context.ts';
 import { differentiate } from '../functions/index.ts';
-import { numberOf } from './size.ts';
 
 /** slope * k + shift. */
 interface Linear {
@@ -51,7 +50,7 @@ export function linearIn(e: Expression, index: string): Linear | null {
       return result;
     }
     case 'quotient': {
-      const [above, below] = [linearIn(e.numerator, index), numberOf(e.denominator)];
+      const [above, below] = [linearIn(e.numerator, index), literalRational(e.denominator)];
       return above && below && !Q.isZero(below) ? { slope: Q.divide(above.slope, below), shift: Q.divide(above.shift, below) } : null;
     }
     default:
@@ -86,7 +85,7 @@ function ratioOf(c: Expression, index: string): Ratio | null {
         const exponent = linearIn(c.exponent, index);
         return exponent && { ...ONE, factor: build.power(c.base, exponent.slope) };
       }
-      const exponent = numberOf(c.exponent);
+      const exponent = literalRational(c.exponent);
       const inner = ratioOf(c.base, index);
       if (!inner || !exponent || !Q.isInteger(exponent) || exponent.num > 8n || exponent.num < -8n) return null;
       let all: Ratio = ONE;

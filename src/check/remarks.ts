@@ -1,5 +1,5 @@
 /** Accuracy that a comment promises for a polynomial of a program ("max error 2e-8 on [0, 1]", "good to 2 ulp"): proved or refuted for the polynomial as it stands. */
-import { build, freeSymbols, Q, substitute, walk, type Expression, type Rational, type Span } from '../expression/index.ts';
+import { build, type Expression, freeSymbols, literalRational, Q, type Rational, type Span, substitute, walk } from '../expression/index.ts';
 import { lookupPlain } from '../functions/index.ts';
 import { polynomialReport } from '../guard/index.ts';
 import type { Finding } from '../protocol.ts';
@@ -8,7 +8,6 @@ import { FLOAT_FORMATS, toPlain } from '../write/index.ts';
 import { decimalUp, intervalIn, intervalOf } from './accuracy.ts';
 import { enclose } from './enclose.ts';
 import type { Asked } from './setting.ts';
-import { numberOf } from './size.ts';
 
 /** What reads polynomials and comments of a program. */
 export interface PolynomialReader {
@@ -175,7 +174,7 @@ function intervalSpoken(comment: string, variable: string, symbol: string | null
 function rationalEnds(low: Expression, high: Expression): Remark['interval'] {
   const [a, b] = [enclose(low), enclose(high)];
   if (!a || !b) return null;
-  const inside = { low: numberOf(low) ?? Q.negate(shortBelow(Q.negate(a.high))), high: numberOf(high) ?? shortBelow(b.low) };
+  const inside = { low: literalRational(low) ?? Q.negate(shortBelow(Q.negate(a.high))), high: literalRational(high) ?? shortBelow(b.low) };
   return Q.compare(inside.low, inside.high) < 0 ? inside : null;
 }
 

@@ -1,9 +1,8 @@
 /** In which quantity, and at which point, a claim is an expansion: from the request, from marks and words around, else from its own powers. */
-import { build, children, dependsOn, freeSymbols, Q, sameExpression, walk, type Assumption, type Expression } from '../expression/index.ts';
+import { type Assumption, build, children, dependsOn, type Expression, freeSymbols, literalRational, Q, sameExpression, walk } from '../expression/index.ts';
 import type { Budget } from '../outcome.ts';
 import { candidates } from '../read/index.ts';
 import type { Setting } from './context.ts';
-import { numberOf } from './size.ts';
 import { withoutMarks } from './truncated.ts';
 
 export interface Asked {
@@ -109,7 +108,7 @@ function powersOf(e: Expression, name: string, inCalls: boolean): ReadonlySet<st
     if (node.kind === 'symbol') {
       if (node.name === name) found.add(exponent);
     } else if (node.kind === 'power') {
-      const own = numberOf(node.exponent);
+      const own = literalRational(node.exponent);
       visit(node.base, own ? `${exponent}*${Q.toText(own)}` : '');
       visit(node.exponent, '1');
     } else if (node.kind !== 'call' || inCalls) for (const child of children(node)) visit(child, exponent);
@@ -147,7 +146,7 @@ function exponentOf(e: Expression, name: string): number | null {
     case 'quotient':
       return add(exponentOf(e.numerator, name), negate(exponentOf(e.denominator, name)));
     case 'power': {
-      const exponent = numberOf(e.exponent);
+      const exponent = literalRational(e.exponent);
       const base = exponentOf(e.base, name);
       return exponent && base !== null ? Q.toDouble(exponent) * base : dependsOn(e, name) ? null : 0;
     }

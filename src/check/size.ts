@@ -1,5 +1,5 @@
 /** Sizes near the point: leading terms, and which of two functions is smaller. Everything is exact; what cannot be decided says so. */
-import { build, dependsOn, Q, type Expression, type Rational } from '../expression/index.ts';
+import { build, dependsOn, type Expression, literalRational, Q, type Rational } from '../expression/index.ts';
 import { expand, type Expansion } from '../expand/index.ts';
 import type { Outcome } from '../outcome.ts';
 import type { Setting } from './context.ts';
@@ -110,7 +110,7 @@ function takeApart(f: Expression, name: string): { readonly power: Rational; rea
     }
     case 'power': {
       if (!dependsOn(f, name)) return { power: Q.ZERO, coefficient: f };
-      const exponent = numberOf(f.exponent);
+      const exponent = literalRational(f.exponent);
       if (!exponent || !Q.isInteger(exponent)) return null;
       const inner = takeApart(f.base, name);
       if (!inner || !build.isOneNumber(inner.coefficient)) return inner && exponent.num > 0n ? { power: Q.multiply(inner.power, exponent), coefficient: build.power(inner.coefficient, exponent) } : null;
@@ -122,20 +122,6 @@ function takeApart(f: Expression, name: string): { readonly power: Rational; rea
     default:
       return null;
   }
-}
-
-/** The exact value of a number as written: 3, -3, 1/2, -(1/2). */
-export function numberOf(e: Expression): Rational | null {
-  if (e.kind === 'number') return e.value;
-  if (e.kind === 'negation') {
-    const inner = numberOf(e.operand);
-    return inner && Q.negate(inner);
-  }
-  if (e.kind === 'quotient') {
-    const [above, below] = [numberOf(e.numerator), numberOf(e.denominator)];
-    return above && below && !Q.isZero(below) ? Q.divide(above, below) : null;
-  }
-  return null;
 }
 
 export type Comparison = 'smaller' | 'same' | 'larger' | { readonly undecided: string; readonly needsTime: boolean };

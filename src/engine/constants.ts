@@ -1,8 +1,7 @@
 /** Constants that code defines beside an expression (`const double g = 9.81;`): symbols as they stand, or their values filled in. */
-import { type Assumption, build, dependsOn, type Expression, freeSymbols, substitute } from '../expression/index.ts';
+import { type Assumption, build, dependsOn, type Expression, freeSymbols, rationalOf, substitute } from '../expression/index.ts';
 import { type Outcome, success } from '../outcome.ts';
 import type { ConstantAnswer, ExpandRequest } from '../protocol.ts';
-import { rationalOf } from '../rigorous/index.ts';
 import { toPlain } from '../write/index.ts';
 import type { EngineTools } from './resources.ts';
 import { candidatesOf, type SourceFormula, sourceFormula, type SourceRequest } from './source.ts';

@@ -1,9 +1,9 @@
 /** `expand`: text -> expansion, bound, terms needed, and the details asked for. */
-import { dependsOn, type Expression, freeSymbols, type Rational, structureKey } from '../expression/index.ts';
+import { dependsOn, type Expression, freeSymbols, literalRational, type Rational, structureKey } from '../expression/index.ts';
 import { expand, expandRoot, expandSmall, isScalarFormula, type Expansion, type ExpansionProblem } from '../expand/index.ts';
 import { type Budget, failure, type Outcome, success } from '../outcome.ts';
 import type { ExpandAnswer, ExpandRequest, Failure } from '../protocol.ts';
-import { rationalOf, readExact, readSmall } from '../read/index.ts';
+import { readExact, readSmall } from '../read/index.ts';
 import { readAllAssumptions } from './assumptions.ts';
 import { withBounds } from './bounds.ts';
 import { expansionAnswer } from './expansionAnswer.ts';
@@ -24,7 +24,7 @@ const DEFAULT_TERMS = 4;
 function extent(request: ExpandRequest): Outcome<{ readonly terms: number } | { readonly order: Rational }> {
   if (request.order === undefined) return success({ terms: request.terms ?? DEFAULT_TERMS });
   const read = readExact(String(request.order));
-  const value = read.ok ? rationalOf(read.value) : null;
+  const value = read.ok ? literalRational(read.value) : null;
   return value ? success({ order: value }) : failure('bad-request', `The order "${request.order}" must be a rational number such as 6 or 7/2.`);
 }
 

@@ -1,13 +1,13 @@
 /** `fit`: text -> a polynomial for a program, its proven error, and its code. */
 import { termsNeeded } from '../bound/index.ts';
 import { expand } from '../expand/index.ts';
-import { build, type Expression, Q, type Rational } from '../expression/index.ts';
+import { build, type Expression, Q, type Rational, rationalOf } from '../expression/index.ts';
 import { countOperations, estimatedSpeed, type Fit, fit, type FitProblem, type FloatFormat, formatByName, type SecondVariable } from '../fit/index.ts';
 import { describe } from '../functions/index.ts';
 import { budget, type Budget, failure, type Outcome, success } from '../outcome.ts';
 import type { CoefficientAnswer, ExpandRequest, FitAnswer, FitPieceAnswer, FitReductionAnswer, FitRequest, FitSpeedAnswer } from '../protocol.ts';
 import { codeLanguage as isCode, readExact } from '../read/index.ts';
-import { encloseReal, rationalOf, real } from '../rigorous/index.ts';
+import { encloseReal, real } from '../rigorous/index.ts';
 import { hexFloat, shortestDecimal, toPlain } from '../write/index.ts';
 import { filledConstants, sourceOf } from './constants.ts';
 import { fitPlot } from './fitPlot.ts';

@@ -1,12 +1,12 @@
 /** `guard`: text -> an accurate replacement for an expression that cancels or is 0/0 near a point, its proof, and its code. */
-import { type Expression, Q, type Rational } from '../expression/index.ts';
+import { type Expression, Q, type Rational, rationalOf } from '../expression/index.ts';
 import { formatByName } from '../fit/index.ts';
 import { describe } from '../functions/index.ts';
 import { decimal, guard, type Guarded, type GuardProblem } from '../guard/index.ts';
 import { type Budget, failure, type Outcome, success } from '../outcome.ts';
 import type { ExpandRequest, GuardAnswer, GuardRequest } from '../protocol.ts';
 import { codeLanguage as isCode, readExact } from '../read/index.ts';
-import { encloseReal, rationalOf, real } from '../rigorous/index.ts';
+import { encloseReal, real } from '../rigorous/index.ts';
 import { codeLanguage, shortestDecimal, toPlain } from '../write/index.ts';
 import { filledConstants, sourceOf } from './constants.ts';
 import { libraryPrefix } from './insertion.ts';

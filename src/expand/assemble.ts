@@ -5,6 +5,7 @@ import type { Expansion, ExpansionProblem, ExpansionRemainder, ExpansionTerm } f
 import { factorTree, type RawTerm } from './flatten.ts';
 import type { Direction } from './open-side.ts';
 import type { SideResult } from './side.ts';
+import { excludesValuesOfFresh } from './session.ts';
 
 const one = build.number(1);
 
@@ -31,7 +32,7 @@ export function assemble(problem: ExpansionProblem, direction: Direction | 'both
     exact,
     divergent: c.notes.divergent && side.remainder !== null,
     oscillating,
-    assumptions: [...new Set([...assumptions, ...c.notes.assumptions, ...[...c.field.needed].filter((a) => !mentions(a, c.local))])],
+    assumptions: [...new Set([...assumptions, ...c.notes.assumptions, ...[...c.field.needed].filter((a) => !mentions(a, c.local) && !excludesValuesOfFresh(a))])],
   };
 }
 

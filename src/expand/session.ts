@@ -44,3 +44,6 @@ export function freshSymbol(s: Session, stem: string): string {
   s.fresh.value += 1;
   return `${stem}'${s.fresh.value}`;
 }
+
+/** Whether a condition `... != 0` speaks of such a symbol: it excludes single values of a variable that is integrated or put in later, where what is found holds by continuity. */
+export const excludesValuesOfFresh = (condition: string): boolean => /'\d/.test(condition) && condition.endsWith('!= 0');

@@ -96,6 +96,6 @@ function iterated(problem: SmallProblem, budget: Budget): Expansion {
     exact: remainder === null,
     divergent: c.notes.divergent && remainder !== null,
     oscillating: false,
-    assumptions: [order, ...positive.map((a) => (a.kind === 'relation' && a.left.kind === 'symbol' ? `${a.left.name} > 0` : '')), ...c.notes.assumptions, ...field.needed],
+    assumptions: [order, ...positive.map((a) => (a.kind === 'relation' && a.left.kind === 'symbol' ? `${a.left.name} > 0` : '')), ...c.notes.assumptions, ...[...field.needed].filter((a) => !excludesValuesOfFresh(a))],
   };
 }

@@ -3,8 +3,7 @@
  * A multiplication, an addition and a fused operation cost 1, a division or square root 4, a library call what its usual steps cost (reducing the argument, a table or
  * polynomial, undoing the reduction). The figures for calls are rounded medians of test/bench, which prints estimated and measured ratio side by side; no promise.
  */
-import type { Expression } from '../expression/index.ts';
-import { rationalOf } from '../rigorous/index.ts';
+import { type Expression, rationalOf } from '../expression/index.ts';
 import { codeLanguage } from '../write/index.ts';
 import { type Operations, countOperations, type Program } from './program.ts';
 

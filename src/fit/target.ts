@@ -1,9 +1,9 @@
 /** The function of a fit as the search needs it: f = (x - z)^s g with the zero at z divided out, parity, fast values of g. */
-import { build, dependsOn, type Expression, freeSymbols, Q, type Rational, substitute } from '../expression/index.ts';
+import { build, dependsOn, type Expression, freeSymbols, Q, type Rational, rationalOf, substitute } from '../expression/index.ts';
 import { expand } from '../expand/index.ts';
 import { describe } from '../functions/index.ts';
 import { type Budget, Declined } from '../outcome.ts';
-import { encloseReal, rationalOf, real } from '../rigorous/index.ts';
+import { encloseReal, real } from '../rigorous/index.ts';
 import { chebyshevProxy } from './chebyshev.ts';
 import { ballToFixed, type Fixed, fromFixed } from './fixed.ts';
 

@@ -1,9 +1,9 @@
 /** Truncated and economized expansions as candidates beside the best polynomial: what a series alone would give. */
 import { expand } from '../expand/index.ts';
-import { build, Q, type Rational } from '../expression/index.ts';
+import { build, Q, type Rational, rationalOf } from '../expression/index.ts';
 import { describe } from '../functions/index.ts';
 import { type Budget, Declined } from '../outcome.ts';
-import { encloseReal, rationalOf, real } from '../rigorous/index.ts';
+import { encloseReal, real } from '../rigorous/index.ts';
 import { ballToFixed, type Fixed, toFixed } from './fixed.ts';
 import { inUnit, largestError, residualOf } from './grid.ts';
 import { type Found, gridFor, leastDegree, powersOf, type Search } from './search.ts';

@@ -1,6 +1,5 @@
 /** Short writing for the bodies of descriptions. Numbers are lifted, zeros and ones dropped, rational factors multiplied; nothing else is simplified. */
-import { build, type Expression, Q, type Rational } from '../expression/index.ts';
-import { asRational } from './exactForms.ts';
+import { build, type Expression, Q, type Rational, rationalOf } from '../expression/index.ts';
 
 export type Value = Expression | Rational | number | bigint;
 
@@ -88,7 +87,7 @@ export const gamma = (v: Value): Expression => call('gamma', v);
 /** 1/Gamma(v), zero at the poles of Gamma. */
 export function reciprocalGamma(v: Value): Expression {
   const e = lift(v);
-  const exact = asRational(e);
+  const exact = rationalOf(e);
   if (exact && Q.isInteger(exact) && exact.num <= 0n) return build.number(0);
   return over(1, gamma(e));
 }

@@ -1,6 +1,5 @@
 /** Symbolic derivatives of trees by the rules of calculus and the derivatives that descriptions state. */
-import { build, type Expression, freeSymbols, Q } from '../expression/index.ts';
-import { asRational } from './exactForms.ts';
+import { build, type Expression, freeSymbols, Q, rationalOf } from '../expression/index.ts';
 import { describe } from './registry.ts';
 
 const isZero = (e: Expression): boolean => e.kind === 'number' && Q.isZero(e.value);
@@ -41,7 +40,7 @@ export function differentiate(e: Expression, name: string, along: (symbol: strin
     case 'power': {
       const [base, exponent] = [d(e.base), d(e.exponent)];
       if (!base || !exponent) return null;
-      const constant = asRational(e.exponent);
+      const constant = rationalOf(e.exponent);
       if (constant && Q.isOne(constant)) return base;
       if (constant) return times(build.number(constant), Q.equal(constant, Q.rational(2)) ? e.base : build.power(e.base, Q.subtract(constant, Q.ONE)), base);
       const lower = build.difference(e.exponent, build.number(1));

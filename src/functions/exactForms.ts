@@ -1,36 +1,5 @@
 /** Recognising exact values in expressions, as `value` rules need it: rationals, rational multiples of pi, square roots. */
-import { build, type Expression, Q, type Rational } from '../expression/index.ts';
-
-/** The rational number that the tree is by arithmetic on number nodes alone; null otherwise. Deep or huge trees give null. */
-export function asRational(e: Expression, depth = 40): Rational | null {
-  if (depth < 0) return null;
-  const inner = (child: Expression): Rational | null => asRational(child, depth - 1);
-  switch (e.kind) {
-    case 'number':
-      return e.value;
-    case 'negation': {
-      const value = inner(e.operand);
-      return value && Q.negate(value);
-    }
-    case 'sum':
-      return fold(e.terms, Q.ZERO, Q.add, inner);
-    case 'product':
-      return fold(e.factors, Q.ONE, Q.multiply, inner);
-    case 'quotient': {
-      const numerator = inner(e.numerator);
-      const denominator = inner(e.denominator);
-      return numerator && denominator && !Q.isZero(denominator) ? Q.divide(numerator, denominator) : null;
-    }
-    case 'power': {
-      const base = inner(e.base);
-      const exponent = inner(e.exponent);
-      if (!base || !exponent || !Q.isInteger(exponent) || Q.compare(Q.absolute(exponent), Q.rational(64)) > 0) return null;
-      return Q.isZero(base) && exponent.num < 0n ? null : Q.power(base, exponent.num);
-    }
-    default:
-      return null;
-  }
-}
+import { build, type Expression, Q, type Rational, rationalOf } from '../expression/index.ts';
 
 function fold(items: readonly Expression[], start: Rational, step: (a: Rational, b: Rational) => Rational, value: (e: Expression) => Rational | null): Rational | null {
   let total = start;
@@ -44,7 +13,7 @@ function fold(items: readonly Expression[], start: Rational, step: (a: Rational,
 
 /** An integer of moderate size (|n| at most `limit`), as a JavaScript number. */
 export function asInteger(e: Expression, limit = 100000): number | null {
-  const value = asRational(e);
+  const value = rationalOf(e);
   return value && Q.isInteger(value) && Q.compare(Q.absolute(value), Q.rational(limit)) <= 0 ? Number(value.num) : null;
 }
 
@@ -65,7 +34,7 @@ function multipleOf(e: Expression, isBase: (e: Expression) => boolean, depth = 4
       let found: Rational | null = null;
       let scale = Q.ONE;
       for (const factor of e.factors) {
-        const plain = asRational(factor);
+        const plain = rationalOf(factor);
         if (plain) {
           scale = Q.multiply(scale, plain);
           continue;
@@ -78,7 +47,7 @@ function multipleOf(e: Expression, isBase: (e: Expression) => boolean, depth = 4
     }
     case 'quotient': {
       const numerator = multipleOf(e.numerator, isBase, depth - 1);
-      const denominator = asRational(e.denominator);
+      const denominator = rationalOf(e.denominator);
       return numerator && denominator && !Q.isZero(denominator) ? Q.divide(numerator, denominator) : null;
     }
     default:
@@ -101,7 +70,7 @@ export function asMultipleOfImaginaryPi(e: Expression): Rational | null {
   }
   if (e.kind === 'quotient') {
     const inner = asMultipleOfImaginaryPi(e.numerator);
-    const denominator = asRational(e.denominator);
+    const denominator = rationalOf(e.denominator);
     return inner && denominator && !Q.isZero(denominator) ? Q.divide(inner, denominator) : null;
   }
   if (e.kind === 'product') {
@@ -115,7 +84,7 @@ export function asMultipleOfImaginaryPi(e: Expression): Rational | null {
 /** sign(e) e^2 where e is a rational times a square root of a rational; null otherwise. */
 export function signedSquare(e: Expression, depth = 12): Rational | null {
   if (depth < 0) return null;
-  const plain = asRational(e);
+  const plain = rationalOf(e);
   if (plain) return Q.multiply(plain, Q.absolute(plain));
   switch (e.kind) {
     case 'negation': {
@@ -130,8 +99,8 @@ export function signedSquare(e: Expression, depth = 12): Rational | null {
       return numerator && denominator && !Q.isZero(denominator) ? Q.divide(numerator, denominator) : null;
     }
     case 'power': {
-      const exponent = asRational(e.exponent);
-      const base = asRational(e.base);
+      const exponent = rationalOf(e.exponent);
+      const base = rationalOf(e.base);
       if (!exponent || !base || base.num <= 0n || exponent.den !== 2n || Q.compare(Q.absolute(exponent), Q.rational(64)) > 0) return null;
       return Q.power(base, exponent.num);
     }

@@ -1,8 +1,7 @@
 /** Builders of formal series and recognition of places. */
-import { type Expression, Q, type Rational, sameExpression } from '../expression/index.ts';
+import { type Expression, Q, type Rational, rationalOf, sameExpression } from '../expression/index.ts';
 import { lift, over, plus, scaled, sym } from './compose.ts';
 import type { FormalSeries, LocalForm, Place } from './description.ts';
-import { asRational } from './exactForms.ts';
 
 type Coefficient = Rational | Expression;
 
@@ -37,7 +36,7 @@ export function ratioSeries(argument: Expression, first: Coefficient, ratio: (k:
 function shiftedRatio(tops: readonly Coefficient[], bottoms: readonly Coefficient[], k: number): Coefficient {
   const shift = (value: Coefficient): Coefficient => {
     if (!('kind' in value)) return Q.add(value, Q.rational(k));
-    const exact = asRational(value);
+    const exact = rationalOf(value);
     return exact ? Q.add(exact, Q.rational(k)) : plus(value, k);
   };
   let top: Coefficient = Q.ONE;
@@ -61,7 +60,7 @@ export function hypergeometricSeries(argument: Expression, tops: readonly Coeffi
 export function terminationLength(tops: readonly Coefficient[]): number | null {
   let shortest: number | null = null;
   for (const top of tops) {
-    const exact = 'kind' in top ? asRational(top) : top;
+    const exact = 'kind' in top ? rationalOf(top) : top;
     if (exact && Q.isInteger(exact) && exact.num <= 0n && exact.num > -1000000n) {
       const length = 1 - Number(exact.num);
       if (shortest === null || length < shortest) shortest = length;
@@ -85,13 +84,13 @@ export const formalName = (i: number): Expression => sym(`\\formal_${i + 1}`);
 export const isAt = (place: Place, value: number | Rational | Expression): boolean => {
   if (place.kind !== 'finite') return false;
   const wanted = lift(value);
-  const exact = asRational(place.center);
+  const exact = rationalOf(place.center);
   return exact && wanted.kind === 'number' ? Q.equal(exact, wanted.value) : sameExpression(place.center, wanted);
 };
 /** Integer n where the centre is the integer n; null otherwise. */
 export function integerCenter(place: Place): number | null {
   if (place.kind !== 'finite') return null;
-  const exact = asRational(place.center);
+  const exact = rationalOf(place.center);
   return exact && Q.isInteger(exact) && Q.compare(Q.absolute(exact), Q.rational(10000)) <= 0 ? Number(exact.num) : null;
 }
 /** The large argument where the place is +infinity (1) or -infinity (-1) on the real line. */

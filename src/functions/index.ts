@@ -3,5 +3,5 @@ export type { FormalSeries, FunctionDescription, FunctionNames, LocalForm, Place
 export { differentiate } from './differentiate.ts';
 export { LANGUAGE_FAMILIES, type LanguageFamily, languageFamily } from './naming.ts';
 export { acceptsArity, allFunctions, codeCall, codeWriting, describe, lookupCode, lookupLatex, lookupLatexLetter, lookupPlain, type LatexShape } from './registry.ts';
-export { asInteger, asMultipleOfImaginaryPi, asMultipleOfPi, asRational, signedSquare } from './exactForms.ts';
+export { asInteger, asMultipleOfImaginaryPi, asMultipleOfPi, signedSquare } from './exactForms.ts';
 export { isolateRoots, rootArguments, rootBall } from './algebraic/index.ts';

@@ -1,6 +1,5 @@
 /** Identities for a difference A - B whose two parts may cancel: forms in which they do not. Sources: DLMF 4.21 (circular), 4.35 (hyperbolic), 4.6 and 4.8 (logarithms, powers); conjugates are plain algebra. */
-import { build, type Expression } from '../expression/index.ts';
-import { rationalOf } from '../rigorous/index.ts';
+import { build, type Expression, rationalOf } from '../expression/index.ts';
 import { callOf, cubeOf, exponentOf, isOne, type Normal, ONE, radicandOf, same, squareBase } from './patterns.ts';
 
 export interface Rewritten {

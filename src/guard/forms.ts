@@ -1,8 +1,7 @@
 /** Exact forms of an expression: the expression as it stands and those that identities make of it, each proved equal by the normal form of the difference. */
-import { type Assumption, children, type Expression, mapChildren, structureKey, walk } from '../expression/index.ts';
+import { type Assumption, children, type Expression, mapChildren, rationalOf, structureKey, walk } from '../expression/index.ts';
 import { describe } from '../functions/index.ts';
 import type { Budget } from '../outcome.ts';
-import { rationalOf } from '../rigorous/index.ts';
 import { codeWriting } from '../functions/index.ts';
 import type { LanguageRow } from '../write/index.ts';
 import type { Rewritten } from './differences.ts';

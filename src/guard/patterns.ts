@@ -1,8 +1,7 @@
 /** Views of a tree that identities ask for: sums as coefficients times cores, products as factors, exponentials, roots, squares. */
 import { createField, type Field } from '../algebra/index.ts';
-import { type Assumption, build, type Expression, Q, type Rational, structureKey, walk } from '../expression/index.ts';
+import { type Assumption, build, type Expression, Q, type Rational, rationalOf, structureKey, walk } from '../expression/index.ts';
 import { type Budget, budget as budgetOf, Declined } from '../outcome.ts';
-import { rationalOf } from '../rigorous/index.ts';
 
 export const ONE = build.number(1);
 export const same = (a: Expression, b: Expression): boolean => structureKey(a) === structureKey(b);

@@ -1,9 +1,9 @@
 /** Where an argument may lie, and local models of every node of a tree there. */
 import { expand } from '../expand/index.ts';
-import { build, type Expression, Q, type Rational, structureKey, walk } from '../expression/index.ts';
+import { build, type Expression, Q, type Rational, rationalOf, structureKey, walk } from '../expression/index.ts';
 import { describe } from '../functions/index.ts';
 import type { Budget } from '../outcome.ts';
-import { type Ball, ballArithmetic, encloseReal, interval, isElementaryName, type Model, type ModelArithmetic, modelArithmetic, modelOfTree, rationalOf, real, type RealArithmetic, realBallTrees } from '../rigorous/index.ts';
+import { type Ball, ballArithmetic, encloseReal, interval, isElementaryName, type Model, type ModelArithmetic, modelArithmetic, modelOfTree, real, type RealArithmetic, realBallTrees } from '../rigorous/index.ts';
 
 export type BallModel = Model<Ball>;
 

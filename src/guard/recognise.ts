@@ -1,10 +1,10 @@
 /** Polynomials that programs already hold: which function one approximates, whether it is a truncated expansion or fitted, and its true error, proved. */
 import { boundDifference, polynomialOf } from '../bound/index.ts';
 import { expand } from '../expand/index.ts';
-import { build, type Expression, Q, type Rational } from '../expression/index.ts';
+import { build, type Expression, Q, type Rational, rationalOf } from '../expression/index.ts';
 import { allFunctions, describe } from '../functions/index.ts';
 import { type Budget, Declined } from '../outcome.ts';
-import { encloseReal, rationalOf, real } from '../rigorous/index.ts';
+import { encloseReal, real } from '../rigorous/index.ts';
 import { roundToFormat, type FloatFormat } from '../write/index.ts';
 
 export interface PolynomialQuestion {

@@ -6,10 +6,10 @@
  * from the point, so that 0/0 and what cancels exactly there do not spoil them.
  * A sum with a product in it may be contracted to one fused operation: that drops a rounding whose bound stays in the sum.
  */
-import { build, type Expression, Q, type Rational } from '../expression/index.ts';
+import { build, type Expression, Q, type Rational, rationalOf } from '../expression/index.ts';
 import type { FloatFormat } from '../fit/index.ts';
 import { describe } from '../functions/index.ts';
-import { interval, rationalOf } from '../rigorous/index.ts';
+import { interval } from '../rigorous/index.ts';
 import { binaryExponent, isRepresentable, powerOfTwo } from '../write/index.ts';
 import type { BallModel, PieceModels } from './pieces.ts';
 

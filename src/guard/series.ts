@@ -1,9 +1,9 @@
 /** The series branch of a guard: a truncated expansion in Horner form, its coefficients rounded to the format, and the proof of its whole error. */
 import { expand } from '../expand/index.ts';
-import { build, type Expression, Q, type Rational } from '../expression/index.ts';
+import { build, type Expression, Q, type Rational, rationalOf } from '../expression/index.ts';
 import { describe } from '../functions/index.ts';
 import type { Budget } from '../outcome.ts';
-import { encloseReal, interval, rationalOf, real } from '../rigorous/index.ts';
+import { encloseReal, interval, real } from '../rigorous/index.ts';
 import { binaryExponent, polynomialForm, type PolynomialTerm, powerOfTwo, roundToFormat, type Step, termTree, toPlain } from '../write/index.ts';
 import { type ExactOrders, PieceModels } from './pieces.ts';
 import { near, type Scanner, type Side } from './region.ts';

@@ -1,6 +1,5 @@
 /** Which quantity is small (or large), and near which point: from what the text around says, else a list to choose from. */
-import { build, children, dependsOn, type Expression, freeSymbols, Q, type Rational, walk } from '../expression/index.ts';
-import { rationalOf } from './exact.ts';
+import { build, children, dependsOn, type Expression, freeSymbols, literalRational, Q, type Rational, walk } from '../expression/index.ts';
 import { maximalMonomials, type Monomial, monomialKey, monomialOf, primitive } from './monomial.ts';
 
 export interface Candidate {
@@ -95,7 +94,7 @@ function smallVector(vectors: readonly Candidate[], around: Surroundings): Found
     const { argument } = order;
     const inverted = argument.kind === 'quotient';
     const base = inverted ? argument.denominator : argument;
-    const power = base.kind === 'power' ? rationalOf(base.exponent) : Q.ONE;
+    const power = base.kind === 'power' ? literalRational(base.exponent) : Q.ONE;
     const vector = lengthOf(base.kind === 'power' ? base.base : base);
     if (vector && power) return { variable: vector, point: (Q.signOf(power) < 0) !== inverted ? INFINITY : ZERO, from: 'order term' };
   }
@@ -282,7 +281,7 @@ function fromCondition(condition: Expression, ratios: readonly Candidate[]): Fou
   const [left, right] = condition.sides;
   const [kind] = condition.relations;
   if (!left || !right) return null;
-  const one = rationalOf(right);
+  const one = literalRational(right);
   if (kind === 'to') {
     if (left.kind === 'symbol') {
       const side = right.kind === 'power' && right.exponent.kind === 'symbol' ? right.exponent.name : '';

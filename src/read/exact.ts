@@ -1,5 +1,5 @@
 /** Exact values, assumptions and small quantities, as they stand outside a document: in requests, notes and settings. */
-import { build, type Expression, Q, type Rational, type Relation } from '../expression/index.ts';
+import { build, type Expression, literalRational, Q, type Rational, type Relation } from '../expression/index.ts';
 import { failure, type Outcome, success } from '../outcome.ts';
 import { readExpression, readFormula, type ReadOptions } from './math/read.ts';
 
@@ -142,7 +142,7 @@ export function readSmall(entries: string | readonly string[], options: ReadOpti
     }
     const powered = right.value.kind === 'power' ? right.value : null;
     const base = powered ? powered.base : right.value;
-    const exponent = powered ? rationalOf(powered.exponent) : Q.ONE;
+    const exponent = powered ? literalRational(powered.exponent) : Q.ONE;
     if (!exponent || Q.signOf(exponent) <= 0) return failure('bad-request', `The exponent in “${short(entry)}” must be a positive number; write for example \\epsilon ~ \\theta^2.`);
     const anchor = found.find((f) => keyOf(f.quantity) === keyOf(base));
     const weight = anchor ? Q.multiply(anchor.weight, exponent) : exponent;
@@ -153,21 +153,6 @@ export function readSmall(entries: string | readonly string[], options: ReadOpti
 }
 
 const keyOf = (e: Expression): string => JSON.stringify(e, (key, value: unknown) => (key === 'span' || key === 'written' ? undefined : typeof value === 'bigint' ? `${value}` : value));
-
-/** A literal rational (`2`, `-1`, `3/2`, `1.5`), or null. */
-export function rationalOf(e: Expression): Rational | null {
-  if (e.kind === 'number') return e.value;
-  if (e.kind === 'negation') {
-    const value = rationalOf(e.operand);
-    return value && Q.negate(value);
-  }
-  if (e.kind === 'quotient') {
-    const above = rationalOf(e.numerator);
-    const below = rationalOf(e.denominator);
-    return above && below && !Q.isZero(below) ? Q.divide(above, below) : null;
-  }
-  return null;
-}
 
 /** Splits at commas, semicolons and the word `and` outside brackets. */
 export function splitList(text: string): string[] {

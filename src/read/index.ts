@@ -5,7 +5,7 @@ import { readExpression, type ReadOptions } from './math/read.ts';
 
 export { type Formula, readExpression, readFormula, type ReadOptions } from './math/read.ts';
 export { collectMacros, type Macro, macrosOf, type MacroTable, NO_MACROS } from './math/macros.ts';
-export { type Assumption, type Property, rationalOf, readAssumption, readExact, readSmall, readVariable, type SmallQuantity } from './exact.ts';
+export { type Assumption, type Property, readAssumption, readExact, readSmall, readVariable, type SmallQuantity } from './exact.ts';
 
 /** One LaTeX formula or chain of relations. Spans are UTF-16 offsets of `text`, also through macro expansion. */
 export const readLatex = (text: string, options: ReadOptions = {}): Outcome<Expression> => readExpression(text, 'latex', options);

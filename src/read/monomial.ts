@@ -1,6 +1,5 @@
 /** Expressions that are one product of symbols to rational powers, up to a constant: the units of which dimensionless ratios are made. */
-import { type Expression, Q, type Rational } from '../expression/index.ts';
-import { rationalOf } from './exact.ts';
+import { type Expression, literalRational, Q, type Rational } from '../expression/index.ts';
 
 /** Symbol -> exponent, in order of appearance; no zero exponents. */
 export type Monomial = ReadonlyMap<string, Rational>;
@@ -24,12 +23,12 @@ export function monomialOf(e: Expression): Monomial | null {
     }
     case 'power': {
       const base = monomialOf(e.base);
-      const exponent = rationalOf(e.exponent);
+      const exponent = literalRational(e.exponent);
       return base && exponent ? combine(new Map(), base, exponent) : null;
     }
     case 'root': {
       const base = monomialOf(e.radicand);
-      const degree = rationalOf(e.degree);
+      const degree = literalRational(e.degree);
       return base && degree && !Q.isZero(degree) ? combine(new Map(), base, Q.reciprocal(degree)) : null;
     }
     default:

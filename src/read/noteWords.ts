@@ -1,7 +1,7 @@
 /** The words of a note: `small x, on |x| <= 0.5, within 1e-6, assume a > 0`. */
-import { build, type Expression, Q, type Rational } from '../expression/index.ts';
+import { build, type Expression, literalRational, Q, type Rational } from '../expression/index.ts';
 import type { Failure, Side } from '../protocol.ts';
-import { type Assumption, notationOf, rationalOf, readAssumption, readExact, readSmall, readVariable, type SmallQuantity } from './exact.ts';
+import { type Assumption, notationOf, readAssumption, readExact, readSmall, readVariable, type SmallQuantity } from './exact.ts';
 import { readExpression } from './math/read.ts';
 
 /** What notes can settle. Absent fields are left to the next in precedence. */
@@ -166,7 +166,7 @@ function readClause(words: Words, clause: string, start: number, end: number): v
     case 'up to order':
     case 'through': {
       const found = readExact(rest.replace(/^order\s+/, ''));
-      const value: Rational | null = found.ok ? rationalOf(found.value) : null;
+      const value: Rational | null = found.ok ? literalRational(found.value) : null;
       if (value) s['order'] = Q.toText(value);
       else say(words, `“${rest}” is no order; write a number such as 6 or 7/2.`, restStart, end);
       return;
@@ -275,7 +275,7 @@ function interval(words: Words, rest: string, start: number, end: number): void 
   if (sides.length === 2 && left?.kind === 'call' && left.function === 'abs' && down(relations[0])) {
     const bound = written(1);
     words.settings['interval'] = [/^[\w.]+$|^\\[A-Za-z]+$/.test(bound) ? `-${bound}` : `-(${bound})`, bound];
-  } else if (sides.length === 3 && down(relations[0]) && down(relations[1]) && middle && !rationalOf(middle)) words.settings['interval'] = [written(0), written(2)];
+  } else if (sides.length === 3 && down(relations[0]) && down(relations[1]) && middle && !literalRational(middle)) words.settings['interval'] = [written(0), written(2)];
   else if (sides.length === 3 && up(relations[0]) && up(relations[1])) words.settings['interval'] = [written(2), written(0)];
   else if (sides.length === 2 && up(relations[0])) words.settings['interval'] = [written(1), 'inf'];
   else if (sides.length === 2 && down(relations[0])) words.settings['interval'] = ['-inf', written(1)];
@@ -325,10 +325,10 @@ function valueOf(e: Expression): Rational | null {
   }
   if (e.kind === 'power') {
     const base = valueOf(e.base);
-    const exponent = rationalOf(e.exponent);
+    const exponent = literalRational(e.exponent);
     return base && exponent && Q.isInteger(exponent) && exponent.num < 400n && exponent.num > -400n && !Q.isZero(base) ? Q.power(base, exponent.num) : null;
   }
-  return rationalOf(e);
+  return literalRational(e);
 }
 
 function assume(words: Words, rest: string, start: number, end: number): void {

@@ -1,5 +1,5 @@
 /** Enclosures of expression trees over any arithmetic. */
-import type { Expression } from '../expression/index.ts';
+import { type Expression, rationalOf } from '../expression/index.ts';
 import { build, Q, substitute } from '../expression/index.ts';
 import { type Arithmetic, ELEMENTARY, type ElementaryName, type RealArithmetic } from './arithmetic.ts';
 import { ballArithmetic } from './ball-arithmetic.ts';
@@ -140,47 +140,6 @@ export function evaluateTree<T>(e: Expression, environment: ReadonlyMap<string, 
     return result;
   };
   return visit(e);
-}
-
-/** A tree of plain rational numbers as one rational; null for any other. */
-export function rationalOf(e: Expression): Q.Rational | null {
-  switch (e.kind) {
-    case 'number':
-      return e.value;
-    case 'negation': {
-      const value = rationalOf(e.operand);
-      return value && Q.negate(value);
-    }
-    case 'quotient': {
-      const [p, q] = [rationalOf(e.numerator), rationalOf(e.denominator)];
-      return p && q && !Q.isZero(q) ? Q.divide(p, q) : null;
-    }
-    case 'sum': {
-      let total = Q.ZERO;
-      for (const term of e.terms) {
-        const value = rationalOf(term);
-        if (!value) return null;
-        total = Q.add(total, value);
-      }
-      return total;
-    }
-    case 'product': {
-      let total = Q.ONE;
-      for (const factor of e.factors) {
-        const value = rationalOf(factor);
-        if (!value) return null;
-        total = Q.multiply(total, value);
-      }
-      return total;
-    }
-    case 'power': {
-      const [base, exponent] = [rationalOf(e.base), rationalOf(e.exponent)];
-      if (!base || !exponent || !Q.isInteger(exponent) || exponent.num > 64n || exponent.num < -64n || (Q.isZero(base) && exponent.num < 0n)) return null;
-      return Q.power(base, exponent.num);
-    }
-    default:
-      return null;
-  }
 }
 
 function realSpecial<T>(r: RealArithmetic<T>, id: string, args: readonly T[]): T | null {

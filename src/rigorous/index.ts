@@ -11,7 +11,7 @@ export { type ComplexArithmetic, complexArithmetic, type Rectangle } from './com
 export * as interval from './doubles.ts';
 export { intervalArithmetic } from './interval-arithmetic.ts';
 export {
-  complexBallTrees, type Describe, type EnclosableFunction, enclose, encloseInterval, encloseReal, encloseRectangle, evaluateTree, intervalTrees, isElementaryName, rationalOf, realBallTrees, type TreeArithmetic,
+  complexBallTrees, type Describe, type EnclosableFunction, enclose, encloseInterval, encloseReal, encloseRectangle, evaluateTree, intervalTrees, isElementaryName, realBallTrees, type TreeArithmetic,
 } from './enclose.ts';
 /** Local models: truncated series with a proven remainder factor. */
 export { type Model, type ModelArithmetic, modelArithmetic } from './model.ts';

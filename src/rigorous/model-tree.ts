@@ -1,8 +1,8 @@
 /** Local models of expression trees. */
-import type { Expression, Rational } from '../expression/index.ts';
+import { type Expression, type Rational, rationalOf } from '../expression/index.ts';
 import { build, dependsOn, freeSymbols, Q, sameExpression } from '../expression/index.ts';
 import type { ElementaryName, RealArithmetic } from './arithmetic.ts';
-import { type EnclosableFunction, evaluateTree, isElementaryName, rationalOf, type TreeArithmetic } from './enclose.ts';
+import { type EnclosableFunction, evaluateTree, isElementaryName, type TreeArithmetic } from './enclose.ts';
 import type { Model, ModelArithmetic } from './model.ts';
 
 /** What models need of a function's description beyond enclosures. */

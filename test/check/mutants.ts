@@ -3,8 +3,8 @@
  * Whether a mutant is still true is decided here from the published coefficients alone, in exact rationals; the engine is not asked.
  */
 import { readFileSync } from 'node:fs';
-import { build, freeSymbols, PLAIN_STYLE, Q, type DocumentStyle, type Expression, type Rational } from '../../src/expression/index.ts';
-import { rationalOf, readExact, readExpression } from '../../src/read/index.ts';
+import { build, type DocumentStyle, type Expression, freeSymbols, literalRational, PLAIN_STYLE, Q, type Rational } from '../../src/expression/index.ts';
+import { readExact, readExpression } from '../../src/read/index.ts';
 import { toLatex, toPlain, toUnicode } from '../../src/write/index.ts';
 
 export interface Published {
@@ -43,7 +43,7 @@ export function publishedRows(file: string): readonly Published[] {
     if (row.kind !== 'explicit' || row.point !== '0' || row.prefactor !== undefined || row.terms.length < 3 || Object.keys(row.parameters).length > 0) return [];
     const terms = row.terms.map(([c, p, log, scale]) => {
       const exact = readExact(c);
-      const coefficient = exact.ok ? rationalOf(exact.value) : null;
+      const coefficient = exact.ok ? literalRational(exact.value) : null;
       return coefficient && log === 0 && scale === undefined && /^-?\d+$/.test(p) ? { coefficient, power: Number(p) } : null;
     });
     const known = terms.filter((t) => t !== null);

@@ -1,10 +1,9 @@
 /** Guards whose emitted C is compiled and run over every float of their interval, with a reference in wider precision that does not cancel. */
-import { Q } from '../../src/expression/index.ts';
+import { Q, rationalOf } from '../../src/expression/index.ts';
 import { formatByName } from '../../src/fit/index.ts';
 import { guard, type Guarded } from '../../src/guard/index.ts';
 import { budget } from '../../src/outcome.ts';
 import { readExact } from '../../src/read/index.ts';
-import { rationalOf } from '../../src/rigorous/index.ts';
 import type { FloatRun } from './everyFloat.ts';
 
 export interface GuardCase {

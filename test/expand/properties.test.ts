@@ -2,10 +2,10 @@
 import fc from 'fast-check';
 import { describe, expect, test } from 'vitest';
 import { expand, type Expansion, partialSum, prefix } from '../../src/expand/index.ts';
-import { build, type Expression, Q, type Rational, structureKey, substitute } from '../../src/expression/index.ts';
+import { build, type Expression, Q, type Rational, rationalOf, structureKey, substitute } from '../../src/expression/index.ts';
 import { describe as describeFunction } from '../../src/functions/index.ts';
 import { budget } from '../../src/outcome.ts';
-import { encloseReal, rationalOf, real } from '../../src/rigorous/index.ts';
+import { encloseReal, real } from '../../src/rigorous/index.ts';
 import { problemOf } from './tools.ts';
 
 const x = build.symbol('x');

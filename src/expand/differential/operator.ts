@@ -2,12 +2,15 @@
 import type { Element } from '../../algebra/types.ts';
 import { Q } from '../../expression/index.ts';
 import { addElements, type Context, isRational, isZero, multiplyElements, negateElement } from '../../series/index.ts';
-import { divideElements } from './taylor.ts';
 
 /** Coefficients, lowest power first. */
 export type Polynomial = readonly Element[];
 
 const vanishes = (c: Context, a: Element): boolean => (isRational(a) ? a.num === 0n : isZero(c, a));
+
+export function divideElements(c: Context, a: Element, b: Element): Element {
+  return isRational(a) && isRational(b) ? Q.divide(a, b) : c.field.divide(a, b);
+}
 
 export function addPolynomials(c: Context, a: Polynomial, b: Polynomial): Polynomial {
   return Array.from({ length: Math.max(a.length, b.length) }, (_, k) => addElements(c, a[k] ?? Q.ZERO, b[k] ?? Q.ZERO));

@@ -9,7 +9,8 @@ import { type OpenSide, openSide } from '../open-side.ts';
 import { bind } from '../session.ts';
 import { falling, type RegularSolution } from './initial-value.ts';
 import { type DifferentialStatement, slot } from './statement.ts';
-import { divideElements, Taylor } from './taylor.ts';
+import { divideElements } from './operator.ts';
+import { Taylor } from './taylor.ts';
 
 const TRIAL = "coefficient'";
 

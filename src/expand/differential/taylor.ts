@@ -10,6 +10,7 @@ import { add, addElements, type Context, isRational, isZero, monomial, multiplyE
 import { evaluate } from '../evaluate.ts';
 import type { OpenSide } from '../open-side.ts';
 import { bind } from '../session.ts';
+import { divideElements } from './operator.ts';
 
 /** The point is singular: there the equation has no solution as a power series with freely chosen values. */
 export class Singular extends Error {}
@@ -32,10 +33,6 @@ export class Taylor {
 
 const constant = (value: Element): Taylor => new Taylor(() => Q.ZERO, [value]);
 const isNull = (e: Element): boolean => isRational(e) && e.num === 0n;
-
-export function divideElements(c: Context, a: Element, b: Element): Element {
-  return isRational(a) && isRational(b) ? Q.divide(a, b) : c.field.divide(a, b);
-}
 
 /** Functions whose derivatives are rational in themselves and each other, everywhere analytic: their coefficients follow from f(u)' = f'(u) u'. */
 const ENTIRE = new Set(['sin', 'cos', 'sinh', 'cosh', 'exp', 'erf', 'erfc', 'airyAi', 'airyBi']);

@@ -1,11 +1,11 @@
 /** sum of (k + a)^p log(k + a)^j by Euler-Maclaurin, the constant from derivatives of the zeta function or Stieltjes constants. Source: DLMF 2.10.1, 25.2.4, 25.2.11 (from memory). */
-import { build, type Expression, Q } from '../../expression/index.ts';
+import { build, type Expression, Q, rationalOf } from '../../expression/index.ts';
 import { Declined } from '../../outcome.ts';
 import { divide, growth, type Multi, monomialOf, scaleBy, sumOf, sumOfSeries, theta } from '../../series/index.ts';
 import type { Evaluate, Session } from '../session.ts';
 import { bind, freshSymbol } from '../session.ts';
 import { bernoulliNumbers } from './bernoulli.ts';
-import { type PowerTerm, rationalOf } from './summand.ts';
+import { type PowerTerm } from './summand.ts';
 
 const MOST_BERNOULLI = 120;
 

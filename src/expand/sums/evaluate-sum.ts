@@ -1,5 +1,5 @@
 /** Sums and products over an index: written out, by closed forms, or by Euler-Maclaurin with known constants. */
-import { build, dependsOn, type Expression, type IndexedNode, Q, substitute } from '../../expression/index.ts';
+import { build, dependsOn, type Expression, type IndexedNode, Q, rationalOf, substitute } from '../../expression/index.ts';
 import { Declined } from '../../outcome.ts';
 import { exponential, type Multi, multiply, sumOf } from '../../series/index.ts';
 import { infinityOf } from '../integrals/integral.ts';
@@ -7,7 +7,7 @@ import type { Evaluate, Session } from '../session.ts';
 import { bernoulliNumbers } from './bernoulli.ts';
 import { eulerMaclaurin } from './euler-maclaurin.ts';
 import { powerSeries } from './power-series.ts';
-import { type PowerTerm, rationalOf, type SummandTerm, summandTerms } from './summand.ts';
+import { type PowerTerm, type SummandTerm, summandTerms } from './summand.ts';
 
 /** Sums with at most this many terms are written out. */
 const MOST_WRITTEN = 400;

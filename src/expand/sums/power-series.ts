@@ -1,10 +1,10 @@
 /** Power series given as infinite sums: sum over k of c(k) u^(a k + b) with u -> 0, term by term. */
 import type { Element } from '../../algebra/types.ts';
-import { build, dependsOn, type Expression, type IndexedNode, Q, type Rational, substitute } from '../../expression/index.ts';
+import { build, dependsOn, type Expression, type IndexedNode, Q, type Rational, rationalOf, substitute } from '../../expression/index.ts';
 import { Declined } from '../../outcome.ts';
 import { compose, growth, type Multi, multiply } from '../../series/index.ts';
 import type { Evaluate, Session } from '../session.ts';
-import { linear, rationalOf } from './summand.ts';
+import { linear } from './summand.ts';
 
 interface Parts {
   /** Free of what varies. */

@@ -1,5 +1,5 @@
 /** A summand as a sum of products of one linear factor's power and logarithm, so that each can be summed in closed form. */
-import { build, dependsOn, type Expression, Q, type Rational } from '../../expression/index.ts';
+import { build, dependsOn, type Expression, Q, type Rational, rationalOf } from '../../expression/index.ts';
 
 /** coefficient * (k + shift)^exponent * log(k + shift)^logs, coefficient and shift free of k. */
 export interface PowerTerm {
@@ -179,34 +179,6 @@ function entry(g: Gathered, shift: Expression): Gathered['linear'][number] {
   const created = { shift: value ?? shift, exponent: zero, logs: 0 };
   g.linear.push(created);
   return created;
-}
-
-/** The value of a tree of rational arithmetic. */
-export function rationalOf(e: Expression): Rational | null {
-  const all = (list: readonly Expression[], join: (a: Rational, b: Rational) => Rational, start: Rational): Rational | null =>
-    list.reduce<Rational | null>((total, t) => {
-      const value = rationalOf(t);
-      return total && value && join(total, value);
-    }, start);
-  switch (e.kind) {
-    case 'number':
-      return e.value;
-    case 'negation': {
-      const value = rationalOf(e.operand);
-      return value && Q.negate(value);
-    }
-    case 'sum':
-      return all(e.terms, Q.add, Q.ZERO);
-    case 'product':
-      return all(e.factors, Q.multiply, Q.ONE);
-    case 'quotient': {
-      const a = rationalOf(e.numerator);
-      const b = rationalOf(e.denominator);
-      return a && b && !Q.isZero(b) ? Q.divide(a, b) : null;
-    }
-    default:
-      return null;
-  }
 }
 
 /** Product of (k + r_i)^(n_i) with rational r_i and integers n_i as a sum of single powers. */

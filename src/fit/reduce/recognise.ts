@@ -1,7 +1,7 @@
 /** Functions whose argument can be reduced: one core function, times a constant factor, of an affine argument. */
-import { build, dependsOn, type Expression, Q, type Rational } from '../../expression/index.ts';
+import { build, dependsOn, type Expression, Q, type Rational, rationalOf } from '../../expression/index.ts';
 import { describe } from '../../functions/index.ts';
-import { type Ball, encloseReal, rationalOf, real } from '../../rigorous/index.ts';
+import { type Ball, encloseReal, real } from '../../rigorous/index.ts';
 
 /** f = A g(c x + d), all constants; `exponential`: A e^(c x + d). */
 export type Shape =

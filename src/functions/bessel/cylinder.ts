@@ -1,14 +1,14 @@
 /** Bessel functions J, Y, I, K of x for a fixed order. Sources: DLMF 10.2, 10.8, 10.11, 10.17, 10.25, 10.31, 10.34, 10.40. */
-import { type Expression, Q, type Rational } from '../../expression/index.ts';
+import { type Expression, Q, type Rational, rationalOf } from '../../expression/index.ts';
 import { argument, bigO, call, cos, euler, exp, gamma, half, imaginary, lift, log, minus, neg, over, pi, plus, pow, q, scaled, sin, sqrt, square, times } from '../compose.ts';
 import type { FormalSeries, FunctionDescription, LocalForm, Place } from '../description.ts';
-import { asInteger, asRational } from '../exactForms.ts';
+import { asInteger } from '../exactForms.ts';
 import { stirlingSeries } from '../gamma/gamma.ts';
 import { F1, F2, F3, form, hypergeometricSeries, isAt, ratioSeries, series, terminationLength } from '../formal.ts';
 import { factorial, harmonicNumber } from '../sequences.ts';
 
 export type Order = Rational | Expression;
-export const orderOf = (args: readonly Expression[]): Order => asRational(argument(args, 0)) ?? argument(args, 0);
+export const orderOf = (args: readonly Expression[]): Order => rationalOf(argument(args, 0)) ?? argument(args, 0);
 const addRational = (order: Order, r: Rational): Order => ('kind' in order ? plus(order, r) : Q.add(order, r));
 const negative = (order: Order): Order => ('kind' in order ? neg(order) : Q.negate(order));
 const quarterSquare = (x: Expression): Expression => times(q(1, 4), square(x));
@@ -210,10 +210,10 @@ export const cylinderEquation =
 export function cylinderValue(kind: Kind): NonNullable<FunctionDescription['value']> {
   const id = `bessel${kind}`;
   return (args) => {
-    const order = asRational(argument(args, 0));
+    const order = rationalOf(argument(args, 0));
     const x = argument(args, 1);
     if (!order || Q.compare(Q.absolute(order), Q.rational(40)) > 0) return null;
-    const at = asRational(x);
+    const at = rationalOf(x);
     if (at && Q.isZero(at)) {
       if (kind === 'Y' || kind === 'K' || order.num < 0n) return null;
       return lift(Q.isZero(order) ? 1 : 0);

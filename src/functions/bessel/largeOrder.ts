@@ -2,10 +2,9 @@
  * Bessel functions whose order and argument grow together: J, Y of x = nu + delta (the transition region), J, Y, I, K of x = nu lambda.
  * Sources: DLMF 10.9.17, 10.9.18, 10.19.3 to 10.19.8, 10.41.3 to 10.41.10; Watson, Theory of Bessel Functions, 8.21, 8.42 (from memory).
  */
-import { type Expression, Q, type Rational } from '../../expression/index.ts';
+import { type Expression, Q, type Rational, rationalOf } from '../../expression/index.ts';
 import { call, cos, exp, gamma, lift, log, minus, neg, over, pi, plus, pow, q, sin, sqrt, square, times } from '../compose.ts';
 import type { FormalSeries, FunctionDescription, LocalForm, Together } from '../description.ts';
-import { asRational } from '../exactForms.ts';
 import { F1, F2, form, series } from '../formal.ts';
 import { factorial } from '../sequences.ts';
 
@@ -114,7 +113,7 @@ function transitionPolynomial(m: number): Polynomial {
  * For delta = 0 these are Abramowitz & Stegun 9.3.31 and 9.3.32.
  */
 function transition(kind: 'J' | 'Y', nu: Expression, delta: Expression): LocalForm {
-  const exact = asRational(delta);
+  const exact = rationalOf(delta);
   const coefficient = (m: number): Rational | Expression => {
     const r = (m + 1) % 3;
     if (r === 0) return Q.ZERO;

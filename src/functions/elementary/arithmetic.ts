@@ -1,7 +1,6 @@
 /** Library names for arithmetic, absolute value, sign and rounding. */
-import { build, type Expression, Q, type Rational } from '../../expression/index.ts';
+import { build, type Expression, Q, type Rational, rationalOf } from '../../expression/index.ts';
 import type { FunctionDescription } from '../description.ts';
-import { asRational } from '../exactForms.ts';
 import { everywhere, names } from '../naming.ts';
 
 const { call, number, power, product, quotient, squareRoot, sum } = build;
@@ -10,7 +9,7 @@ const square = (e: Expression): Expression => power(e, 2);
 const rounded =
   (rule: (q: Rational) => bigint) =>
   (args: readonly Expression[]): Expression | null => {
-    const q = asRational(one(args));
+    const q = rationalOf(one(args));
     return q && number(rule(q));
   };
 const ceiling = (q: Rational): bigint => -Q.floor(Q.negate(q));
@@ -30,7 +29,7 @@ export const arithmetic: readonly FunctionDescription[] = [
     }),
     derivative: (args) => call('sign', one(args)),
     value: (args) => {
-      const q = asRational(one(args));
+      const q = rationalOf(one(args));
       return q && number(Q.absolute(q));
     },
     domain: 'smooth except at 0',
@@ -48,7 +47,7 @@ export const arithmetic: readonly FunctionDescription[] = [
     }),
     derivative: () => number(0),
     value: (args) => {
-      const q = asRational(one(args));
+      const q = rationalOf(one(args));
       return q && number(Q.signOf(q));
     },
     domain: 'x is not 0',
@@ -140,7 +139,7 @@ function extreme(sign: 1 | -1): (args: readonly Expression[]) => Expression | nu
   return (args) => {
     let best: Rational | null = null;
     for (const arg of args) {
-      const q = asRational(arg);
+      const q = rationalOf(arg);
       if (!q) return null;
       if (!best || Q.compare(q, best) * sign > 0) best = q;
     }

@@ -1,7 +1,7 @@
 /** exp and log with their relatives in libraries. Sources: DLMF 4.2 to 4.8. */
-import { build, type Expression, Q } from '../../expression/index.ts';
+import { build, type Expression, Q, rationalOf } from '../../expression/index.ts';
 import type { FunctionDescription } from '../description.ts';
-import { asMultipleOfImaginaryPi, asRational, isConstant, piTimes } from '../exactForms.ts';
+import { asMultipleOfImaginaryPi, isConstant, piTimes } from '../exactForms.ts';
 import { everywhere, names } from '../naming.ts';
 
 const { call, constant, difference, negation, number, power, product, quotient, sum } = build;
@@ -20,7 +20,7 @@ export const exponential: readonly FunctionDescription[] = [
     derivative: (args) => exp(one(args)),
     value: (args) => {
       const argument = one(args);
-      const q = asRational(argument);
+      const q = rationalOf(argument);
       if (q && Q.isZero(q)) return number(1);
       if (q && Q.isOne(q)) return constant('e');
       if (argument.kind === 'call' && argument.function === 'log') return argument.args[0] ?? null;
@@ -48,7 +48,7 @@ export const exponential: readonly FunctionDescription[] = [
       const argument = one(args);
       if (isConstant(argument, 'e')) return number(1);
       if (isConstant(argument, 'i')) return product(constant('i'), piTimes(Q.HALF));
-      const q = asRational(argument);
+      const q = rationalOf(argument);
       if (q && Q.isOne(q)) return number(0);
       if (q && Q.isZero(Q.add(q, Q.ONE))) return product(constant('i'), constant('pi'));
       return null;

@@ -1,7 +1,6 @@
 /** Hyperbolic functions and their inverses. Sources: DLMF 4.28 to 4.40. */
-import { build, type Expression, Q } from '../../expression/index.ts';
+import { build, type Expression, Q, rationalOf } from '../../expression/index.ts';
 import type { FunctionDescription } from '../description.ts';
-import { asRational } from '../exactForms.ts';
 import { everywhere, names } from '../naming.ts';
 import { acoshLocal, asinhLocal, atanhLocal } from './inverseLocal.ts';
 
@@ -12,7 +11,7 @@ const reciprocal = (e: Expression): Expression => quotient(number(1), e);
 const atZero =
   (value: Expression) =>
   (args: readonly Expression[]): Expression | null => {
-    const q = asRational(one(args));
+    const q = rationalOf(one(args));
     return q && Q.isZero(q) ? value : null;
   };
 const exponential = (e: Expression): Expression => call('exp', e);
@@ -104,7 +103,7 @@ export const hyperbolic: readonly FunctionDescription[] = [
     names: names({ latex: [...inverseLatex('cosh'), '\\operatorname{Arcosh}', '\\operatorname{arch}'], plain: ['arccosh', 'arcosh'], mpmath: 'acosh', code: everywhere('acosh', { python: ['arccosh', 'acosh'], hlsl: [], java: [] }) }),
     derivative: (args) => reciprocal(product(squareRoot(difference(one(args), number(1))), squareRoot(sum(one(args), number(1))))),
     value: (args) => {
-      const q = asRational(one(args));
+      const q = rationalOf(one(args));
       return q && Q.isOne(q) ? number(0) : null;
     },
     local: acoshLocal,

@@ -1,8 +1,7 @@
 /** Inverse circular and hyperbolic functions at their branch points and at infinity. Sources: DLMF 4.24, 4.38. */
-import { type Expression, Q } from '../../expression/index.ts';
+import { type Expression, Q, rationalOf } from '../../expression/index.ts';
 import { half, imaginary, log, minus, neg, over, pi, plus, q, sqrt, square, times } from '../compose.ts';
 import type { FormalSeries, LocalForm, Place } from '../description.ts';
-import { asRational } from '../exactForms.ts';
 import { alternating, F1, form, isAt, ratioSeries, series } from '../formal.ts';
 
 /** arccos(1 - v) = sqrt(2v) S(v), S = sum of 1*3*...*(2n-1)/(4^n (2n+1) n!) v^n (DLMF 4.24.2). */
@@ -39,7 +38,7 @@ function imaginaryUnitCenter(center: Expression): 1 | -1 | 0 {
   if (center.kind === 'negation' && isUnit(center.operand)) return -1;
   if (center.kind === 'product' && center.factors.length === 2 && center.factors.some(isUnit)) {
     const other = center.factors.find((f) => !isUnit(f));
-    const scale = other && asRational(other);
+    const scale = other && rationalOf(other);
     if (scale && Q.isOne(Q.absolute(scale))) return scale.num > 0n ? 1 : -1;
   }
   return 0;

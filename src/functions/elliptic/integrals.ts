@@ -1,8 +1,8 @@
 /** Elliptic integrals in the parameter m = k^2. Sources: DLMF 19.2, 19.4, 19.5, 19.7, 19.12. */
-import { type Expression, Q, type Rational } from '../../expression/index.ts';
+import { type Expression, Q, type Rational, rationalOf } from '../../expression/index.ts';
 import { argument, call, cos, gamma, half, lift, log, minus, neg, over, pi, plus, pow, q, sin, sqrt, square, times } from '../compose.ts';
 import type { FormalSeries, FunctionDescription, LocalForm, Place } from '../description.ts';
-import { asMultipleOfPi, asRational } from '../exactForms.ts';
+import { asMultipleOfPi } from '../exactForms.ts';
 import { F1, F2, form, hypergeometricSeries, isAt, ratioSeries, series } from '../formal.ts';
 import { fullRecurrence, recurrence } from '../sequences.ts';
 
@@ -63,7 +63,7 @@ export const completeEquation =
 /** K(0), K(1/2), K(-1) and E of the same, E(1) (DLMF 19.6.1, 19.20(ii) with Gamma(1/4)). */
 export function completeValue(which: 'K' | 'E'): NonNullable<FunctionDescription['value']> {
   return (args) => {
-    const m = asRational(argument(args, 0));
+    const m = rationalOf(argument(args, 0));
     if (!m) return null;
     if (Q.isZero(m)) return halfPi;
     if (Q.isOne(m)) return which === 'E' ? lift(1) : null;
@@ -113,9 +113,9 @@ export function incompleteValue(which: 'F' | 'E'): NonNullable<FunctionDescripti
   return (args) => {
     const phi = argument(args, 0);
     const m = argument(args, 1);
-    const zero = asRational(phi);
+    const zero = rationalOf(phi);
     if (zero && Q.isZero(zero)) return lift(0);
-    const parameter = asRational(m);
+    const parameter = rationalOf(m);
     if (parameter && Q.isZero(parameter)) return phi;
     // F(j pi/2) = j K (DLMF 19.2.10).
     const turn = asMultipleOfPi(phi);
@@ -139,14 +139,14 @@ export function piLocal(args: readonly Expression[], index: number, place: Place
   if (index === 1) {
     // J_k = integral of sin^2k/(1 - n sin^2): J_0 = pi/(2 sqrt(1-n)), n J_k = J_(k-1) - W_(k-1), W Wallis' integrals.
     const n = argument(args, 0);
-    const exact = asRational(n);
+    const exact = rationalOf(n);
     if (exact && Q.isZero(exact)) return form(times(halfPi, F1), [hypergeometricSeries(place.offset, [Q.HALF, Q.HALF], [Q.ONE])], 'DLMF 19.5.1, Pi(0|m) = K(m)');
     const moments = recurrence<Expression>(over(pi, times(2, sqrt(minus(1, n)))), (k, previous) => over(minus(previous, times(centralBinomials(k - 1), halfPi)), n));
     return form(F1, [series(place.offset, (k) => times(centralBinomials(k), moments(k)))], 'DLMF 19.2.7, expanded in k^2 under the integral');
   }
   // S_k = integral of sin^2k/Delta: S_0 = K, S_1 = (K-E)/m, (2k+1) m S_(k+1) = 2k(1+m) S_k - (2k-1) S_(k-1).
   const m = argument(args, 1);
-  const exact = asRational(m);
+  const exact = rationalOf(m);
   if (exact && Q.isZero(exact)) return form(times(halfPi, F1), [ratioSeries(place.offset, Q.ONE, (k) => q(2 * k + 1, 2 * k + 2))], 'DLMF 19.6.2');
   const moments = fullRecurrence<Expression>([K(m), over(minus(K(m), E(m)), m)], (k, earlier) => {
     const [one, two] = [earlier[k - 1] ?? lift(0), earlier[k - 2] ?? lift(0)];
@@ -155,8 +155,8 @@ export function piLocal(args: readonly Expression[], index: number, place: Place
   return form(F1, [series(place.offset, (k) => moments(k))], 'DLMF 19.2.7, expanded in alpha^2 under the integral');
 }
 export function piValue(args: readonly Expression[]): Expression | null {
-  const n = asRational(argument(args, 0));
-  const m = asRational(argument(args, 1));
+  const n = rationalOf(argument(args, 0));
+  const m = rationalOf(argument(args, 1));
   if (n && Q.isZero(n)) return K(argument(args, 1));
   if (m && Q.isZero(m) && n && Q.compare(n, Q.ONE) < 0) return over(pi, times(2, sqrt(Q.subtract(Q.ONE, n))));
   return null;

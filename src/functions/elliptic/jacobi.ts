@@ -1,8 +1,7 @@
 /** Jacobian elliptic functions of the argument for a fixed modulus. Sources: DLMF 22.8, 22.10, 22.13. */
-import { type Expression, Q, type Rational } from '../../expression/index.ts';
+import { type Expression, Q, type Rational, rationalOf } from '../../expression/index.ts';
 import { argument, call, lift, minus, neg, over, plus, pow, square, times } from '../compose.ts';
 import type { FormalSeries, FunctionDescription, Place } from '../description.ts';
-import { asRational } from '../exactForms.ts';
 import { F1, F2, F3, form, isAt, series } from '../formal.ts';
 import { factorial, binomial } from '../sequences.ts';
 
@@ -38,7 +37,7 @@ function derivativeAtZero(kind: JacobiKind, n: number): Polynomial {
 }
 
 function maclaurin(kind: JacobiKind, k: Expression, u: Expression): FormalSeries {
-  const exact = asRational(k);
+  const exact = rationalOf(k);
   return series(u, (n) => {
     const p = derivativeAtZero(kind, n);
     const scale = Q.rational(1n, factorial(n));
@@ -88,9 +87,9 @@ export const jacobiValue =
   (kind: JacobiKind): NonNullable<FunctionDescription['value']> =>
   (args) => {
     const u = argument(args, 0);
-    const zero = asRational(u);
+    const zero = rationalOf(u);
     if (zero && Q.isZero(zero)) return lift(kind === 'sn' ? 0 : 1);
-    const k = asRational(argument(args, 1));
+    const k = rationalOf(argument(args, 1));
     if (!k) return null;
     if (Q.isZero(k)) return kind === 'dn' ? lift(1) : call(kind === 'sn' ? 'sin' : 'cos', u);
     if (Q.isOne(Q.absolute(k))) return call(kind === 'sn' ? 'tanh' : 'sech', u);

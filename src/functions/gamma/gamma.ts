@@ -1,8 +1,8 @@
 /** Gamma, its logarithm, digamma and polygamma: behaviour at every point of the real line and at infinity. Sources: DLMF 5.2 to 5.15. */
-import { type Expression, Q, type Rational } from '../../expression/index.ts';
+import { type Expression, Q, type Rational, rationalOf } from '../../expression/index.ts';
 import { argument, call, euler, exp, imaginary, log, minus, neg, over, pi, plus, pow, q, scaled, sqrt, times, gamma as gammaCall } from '../compose.ts';
 import type { FormalSeries, LocalForm, Place } from '../description.ts';
-import { asInteger, asRational } from '../exactForms.ts';
+import { asInteger } from '../exactForms.ts';
 import { alternating, atInfinity, F1, form, integerCenter, series, taylor } from '../formal.ts';
 import { bernoulli, factorial, harmonicNumber } from '../sequences.ts';
 import { zetaAtInteger } from '../zeta/exactZeta.ts';
@@ -97,7 +97,7 @@ function polygammaAtInfinity(order: number, z: Expression): FormalSeries {
 
 /** Exact psi^(n)(a) at integers and half-integers (DLMF 5.4.14, 5.4.15, 5.15.2, 5.15.3), digamma at other small fractions (Gauss, DLMF 5.4.19); null elsewhere. */
 export function polygammaValue(n: number, a: Expression): Expression | null {
-  const exact = asRational(a);
+  const exact = rationalOf(a);
   if (!exact || exact.den > 12n || Q.compare(Q.absolute(exact), Q.rational(60)) > 0) return null;
   if (exact.num <= 0n && exact.den === 1n) return null;
   // psi^(n)(r + m) from psi^(n)(r), 0 < r <= 1: psi^(n)(x+1) = psi^(n)(x) + (-1)^n n!/x^(n+1).
@@ -142,7 +142,7 @@ function gaussDigamma(x: Rational): Expression | null {
 
 /** Gamma at integers and half-integers (DLMF 5.4.1, 5.4.6). */
 export function gammaValue(args: readonly Expression[]): Expression | null {
-  const exact = asRational(argument(args, 0));
+  const exact = rationalOf(argument(args, 0));
   if (!exact || exact.den > 2n || Q.compare(Q.absolute(exact), Q.rational(3000)) > 0) return null;
   if (exact.den === 1n) return exact.num > 0n ? plus(factorial(Number(exact.num) - 1)) : null;
   const m = Number((exact.num - 1n) / 2n);
@@ -153,7 +153,7 @@ export function gammaValue(args: readonly Expression[]): Expression | null {
 }
 
 export function logGammaValue(args: readonly Expression[]): Expression | null {
-  const exact = asRational(argument(args, 0));
+  const exact = rationalOf(argument(args, 0));
   if (!exact || exact.num <= 0n) return null;
   if (exact.den === 1n && exact.num <= 2n) return plus(0);
   const value = gammaValue(args);

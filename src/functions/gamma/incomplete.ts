@@ -1,14 +1,14 @@
 /** Incomplete gamma functions of x for a fixed first argument. Sources: DLMF 8.2 to 8.11. */
-import { type Expression, Q } from '../../expression/index.ts';
+import { type Expression, Q, rationalOf } from '../../expression/index.ts';
 import { argument, bigO, euler, exp, gamma, lift, log, minus, neg, over, plus, pow, scaled, times } from '../compose.ts';
 import type { FormalSeries, LocalForm, Place } from '../description.ts';
-import { asInteger, asRational } from '../exactForms.ts';
+import { asInteger } from '../exactForms.ts';
 import { alternating, F1, form, isAt, ratioSeries, series, terminationLength } from '../formal.ts';
 import { factorial, harmonicNumber } from '../sequences.ts';
 
 /** sum of (1-a)_k (-1/x)^k: Gamma(a,x) = x^(a-1) e^-x times it (DLMF 8.11.2). Ends for a = 1, 2, ... */
 function upperSeriesAtInfinity(a: Expression, x: Expression): FormalSeries {
-  const exact = asRational(a);
+  const exact = rationalOf(a);
   const top = exact ? Q.subtract(Q.ONE, exact) : minus(1, a);
   const length = terminationLength([top]);
   return ratioSeries(over(1, x), Q.ONE, (k) => scaled(Q.MINUS_ONE, 'kind' in top ? plus(top, k) : Q.add(top, Q.rational(k))), {
@@ -19,7 +19,7 @@ function upperSeriesAtInfinity(a: Expression, x: Expression): FormalSeries {
 
 /** sum of (-1)^k x^k/(k!(a+k)), leaving out the term whose denominator vanishes. */
 export function lowerSeriesAtZero(a: Expression, x: Expression): FormalSeries {
-  const exact = asRational(a);
+  const exact = rationalOf(a);
   return series(x, (k) => {
     const scale = Q.divide(alternating(k), Q.rational(factorial(k)));
     if (!exact) return over(scale, plus(a, k));
@@ -83,9 +83,9 @@ export function lowerGammaLocal(args: readonly Expression[], index: number, plac
 /** Gamma(n, x) for n = 1, 2, ... is elementary (DLMF 8.4.8): (n-1)! e^-x sum of x^k/k!. */
 export function upperGammaValue(args: readonly Expression[]): Expression | null {
   const [a = lift(1), x = lift(0)] = args;
-  const zero = asRational(x);
+  const zero = rationalOf(x);
   if (zero && Q.isZero(zero)) {
-    const exact = asRational(a);
+    const exact = rationalOf(a);
     return exact && exact.num > 0n ? gamma(a) : null;
   }
   const n = asInteger(a, 40);
@@ -95,7 +95,7 @@ export function upperGammaValue(args: readonly Expression[]): Expression | null 
 }
 export function lowerGammaValue(args: readonly Expression[]): Expression | null {
   const upper = upperGammaValue(args);
-  const zero = asRational(argument(args, 1));
+  const zero = rationalOf(argument(args, 1));
   if (zero && Q.isZero(zero)) return upper && lift(0);
   return upper && minus(gamma(argument(args, 0)), upper);
 }

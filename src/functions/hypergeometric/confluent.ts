@@ -1,8 +1,8 @@
 /** 1F1, 0F1, Kummer's U and the parabolic cylinder function. Sources: DLMF 10.16, 12.2, 12.9, 13.2, 13.7. */
-import { type Expression, Q, type Rational } from '../../expression/index.ts';
+import { type Expression, Q, type Rational, rationalOf } from '../../expression/index.ts';
 import { argument, call, cos, euler, exp, gamma, half, lift, log, minus, neg, over, pi, plus, pow, q, reciprocalGamma, scaled, sqrt, square, times } from '../compose.ts';
 import type { FunctionDescription, LocalForm, Place } from '../description.ts';
-import { asInteger, asRational } from '../exactForms.ts';
+import { asInteger } from '../exactForms.ts';
 import { F1, F2, F3, form, hypergeometricSeries, isAt, series } from '../formal.ts';
 import { besselILocal, besselJLocal } from '../bessel/cylinder.ts';
 import { polygammaTree } from '../gamma/gamma.ts';
@@ -171,7 +171,7 @@ export function parabolicValue(args: readonly Expression[]): Expression | null {
     }
     return times(exp(neg(over(square(x), 4))), plus(...now.flatMap((c, i) => (c === 0n ? [] : [times(c, pow(x, i))]))));
   }
-  const zero = asRational(x);
+  const zero = rationalOf(x);
   const p = argument(args, 0);
   return zero && Q.isZero(zero) ? times(pow(2, over(p, 2)), sqrt(pi), reciprocalGamma(lift(scaled(q(1, 2), tree(1, negative(parameter(p))))))) : null;
 }

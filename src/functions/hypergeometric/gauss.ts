@@ -1,8 +1,7 @@
 /** The Gauss function 2F1 at 0, at 1 and at infinity. Sources: DLMF 15.2, 15.4, 15.8. */
-import { type Expression, Q, type Rational } from '../../expression/index.ts';
+import { type Expression, Q, type Rational, rationalOf } from '../../expression/index.ts';
 import { euler, gamma, lift, log, neg, over, plus, pow, reciprocalGamma, scaled, times } from '../compose.ts';
 import type { FormalSeries, LocalForm } from '../description.ts';
-import { asRational } from '../exactForms.ts';
 import { F1, F2, F3, form, hypergeometricSeries, series } from '../formal.ts';
 import { polygammaTree } from '../gamma/gamma.ts';
 import { collected } from '../linear.ts';
@@ -12,7 +11,7 @@ type Parameter = Rational | Expression;
 /** A parameter with like terms collected, as a rational where it is one. */
 export const parameter = (e: Expression): Parameter => {
   const tree = collected(e);
-  return asRational(tree) ?? tree;
+  return rationalOf(tree) ?? tree;
 };
 const sum = (...values: Parameter[]): Parameter => parameter(plus(...values));
 const negative = (value: Parameter): Parameter => ('kind' in value ? parameter(neg(value)) : Q.negate(value));

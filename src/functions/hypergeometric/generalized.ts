@@ -1,8 +1,8 @@
 /** pFq with arguments (p, q, a_1..a_p, b_1..b_q, x). Sources: DLMF 13, 15, 16. */
-import { type Expression, Q, type Rational } from '../../expression/index.ts';
+import { type Expression, Q, type Rational, rationalOf } from '../../expression/index.ts';
 import { call, exp, lift, log, minus, neg, over, plus, pow, times } from '../compose.ts';
 import type { FunctionDescription, LocalForm, Place } from '../description.ts';
-import { asInteger, asRational } from '../exactForms.ts';
+import { asInteger } from '../exactForms.ts';
 import { F1, form, hypergeometricSeries, isAt, terminationLength } from '../formal.ts';
 import { kummerEquation, kummerMAtInfinity, kummerMTerminates, limitFunctionAtInfinity } from './confluent.ts';
 import { gaussAtMinusInfinity, gaussAtOne, gaussValueAtOne, parameter } from './gauss.ts';
@@ -87,7 +87,7 @@ export function hypergeometricValue(args: readonly Expression[]): Expression | n
   const parts = hypergeometricParts(args);
   if (!parts) return null;
   const { tops, bottoms, x } = parts;
-  const zero = asRational(x);
+  const zero = rationalOf(x);
   if (zero && Q.isZero(zero)) return lift(1);
   const length = terminationLength(tops);
   if (length !== null && length <= 64 && !bottoms.some((value) => terminationLength([value]) !== null)) {

@@ -1,8 +1,8 @@
 /** Ei, E_n, Si, Ci, Shi, Chi: at 0 with their logarithms and at infinity. Sources: DLMF 6.6, 6.12, 8.19, 8.20. */
-import { type Expression, Q, type Rational } from '../../expression/index.ts';
+import { type Expression, Q, type Rational, rationalOf } from '../../expression/index.ts';
 import { argument, cos, euler, exp, gamma, lift, log, minus, neg, over, pi, plus, pow, q, scaled, sin, square, times } from '../compose.ts';
 import type { FormalSeries, LocalForm, Place } from '../description.ts';
-import { asInteger, asRational } from '../exactForms.ts';
+import { asInteger } from '../exactForms.ts';
 import { alternating, atInfinity, F1, F2, form, isAt, ratioSeries, realLog, series, terminationLength } from '../formal.ts';
 import { lowerSeriesAtZero } from '../gamma/incomplete.ts';
 import { factorial, harmonicNumber } from '../sequences.ts';
@@ -28,7 +28,7 @@ export function eiLocal(_args: readonly Expression[], _index: number, place: Pla
 export function expIntegralLocal(args: readonly Expression[], index: number, place: Place): LocalForm | null {
   if (index !== 1) return null;
   const n = argument(args, 0);
-  const exact = asRational(n);
+  const exact = rationalOf(n);
   if (place.kind === 'infinite') {
     if (place.direction !== 1 && place.direction !== -1) return null;
     const x = place.argument;
@@ -53,8 +53,8 @@ export function expIntegralLocal(args: readonly Expression[], index: number, pla
 /** E_n at 0 for n > 1 and E_0, E_-1, ... which are elementary (DLMF 8.19.6, 8.4.8). */
 export function expIntegralValue(args: readonly Expression[]): Expression | null {
   const x = argument(args, 1);
-  const n = asRational(argument(args, 0));
-  const zero = asRational(x);
+  const n = rationalOf(argument(args, 0));
+  const zero = rationalOf(x);
   if (n && zero && Q.isZero(zero)) return Q.compare(n, Q.ONE) > 0 ? lift(Q.reciprocal(Q.subtract(n, Q.ONE))) : null;
   if (!n || n.den !== 1n || n.num > 0n || n.num < -30n) return null;
   const m = -Number(n.num);

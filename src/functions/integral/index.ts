@@ -1,8 +1,7 @@
 /** Exponential, trigonometric and error integrals. */
-import { build, type Expression, Q } from '../../expression/index.ts';
+import { build, type Expression, Q, rationalOf } from '../../expression/index.ts';
 import type { FunctionDescription } from '../description.ts';
 import { minus } from '../compose.ts';
-import { asRational } from '../exactForms.ts';
 import { enclosed } from '../enclosure/wrap.ts';
 import { integralAlgorithms } from './enclosure.ts';
 import { dawsonLocal, erfcinvLocal, erfcLocal, erfiLocal, erfinvLocal, erfLocal, fresnelCLocal, fresnelSLocal } from './error.ts';
@@ -17,7 +16,7 @@ const sq = (e: Expression): Expression => power(e, 2);
 const atOrigin =
   (value: number) =>
   ([x]: readonly Expression[]): Expression | null => {
-    const exact = x && asRational(x);
+    const exact = x && rationalOf(x);
     return exact && Q.isZero(exact) ? number(value) : null;
   };
 

@@ -1,8 +1,8 @@
 /** Lambert W on all branches and the Wright omega function. Sources: DLMF 4.13; Corless, Gonnet, Hare, Jeffrey, Knuth, "On the Lambert W function", Adv. Comput. Math. 5 (1996), from memory where named. */
-import { build, type Expression, Q, type Rational } from '../../expression/index.ts';
+import { build, type Expression, Q, type Rational, rationalOf } from '../../expression/index.ts';
 import { argument, bigO, call, exp, lift, log, neg, over, plus, pow, sqrt, times } from '../compose.ts';
 import type { LocalForm, Place } from '../description.ts';
-import { asInteger, asRational, isConstant } from '../exactForms.ts';
+import { asInteger, isConstant } from '../exactForms.ts';
 import { atInfinity, F1, form, isAt, series } from '../formal.ts';
 import { factorial, fullRecurrence, recurrence, stirlingCycle } from '../sequences.ts';
 
@@ -48,7 +48,7 @@ const derivativePolynomials = recurrence<readonly bigint[]>([1n], (n, p) => {
 });
 
 function polynomialAt(p: readonly bigint[], w: Expression): Expression {
-  const exact = asRational(w);
+  const exact = rationalOf(w);
   if (exact) return lift(p.reduceRight<Rational>((sum, c) => Q.add(Q.multiply(sum, exact), Q.rational(c)), Q.ZERO));
   return plus(...p.map((c, i) => times(c, pow(w, i))));
 }
@@ -57,14 +57,14 @@ const branchPoint = (place: Place): boolean => {
   if (place.kind !== 'finite') return false;
   const center = place.center;
   const inner = center.kind === 'negation' ? center.operand : null;
-  const negativeExp = (x: Expression): boolean => (x.kind === 'quotient' && asRational(x.numerator)?.num === 1n && asRational(x.numerator)?.den === 1n && isConstant(x.denominator, 'e')) || (x.kind === 'call' && x.function === 'exp' && isMinusOne(x.args[0])) || (x.kind === 'power' && isConstant(x.base, 'e') && isMinusOne(x.exponent));
+  const negativeExp = (x: Expression): boolean => (x.kind === 'quotient' && rationalOf(x.numerator)?.num === 1n && rationalOf(x.numerator)?.den === 1n && isConstant(x.denominator, 'e')) || (x.kind === 'call' && x.function === 'exp' && isMinusOne(x.args[0])) || (x.kind === 'power' && isConstant(x.base, 'e') && isMinusOne(x.exponent));
   if (inner && negativeExp(inner)) return true;
   if (center.kind === 'quotient') return isMinusOne(center.numerator) && isConstant(center.denominator, 'e');
   if (center.kind === 'product' && center.factors.length === 2) return center.factors.some(isMinusOne) && center.factors.some(negativeExp);
   return false;
 };
 const isMinusOne = (x: Expression | undefined): boolean => {
-  const exact = x && asRational(x);
+  const exact = x && rationalOf(x);
   return exact !== null && exact !== undefined && Q.equal(exact, Q.MINUS_ONE);
 };
 
@@ -106,7 +106,7 @@ export function lambertValue(args: readonly Expression[]): Expression | null {
   const x = argument(args, 1);
   if (branch === null) return null;
   if (branch === 0) {
-    const exact = asRational(x);
+    const exact = rationalOf(x);
     if (exact && Q.isZero(exact)) return lift(0);
     if (isConstant(x, 'e')) return lift(1);
   }
@@ -135,7 +135,7 @@ export function wrightLocal(_args: readonly Expression[], _index: number, place:
   return form(F1, [series(place.offset, (k) => (k === 0 ? w : over(polynomialAt(omegaPolynomials(k - 1), w), times(factorial(k), pow(plus(1, w), 2 * k - 1)))))], 'omega\' = omega/(1 + omega), differentiated');
 }
 export function wrightValue([x]: readonly Expression[]): Expression | null {
-  const exact = x && asRational(x);
+  const exact = x && rationalOf(x);
   if (!exact) return null;
   if (Q.isOne(exact)) return lift(1);
   return null;

@@ -1,8 +1,8 @@
 /** Polylogarithms and the functions of their circle: Clausen, inverse tangent integral, Debye. Sources: DLMF 25.12, Abramowitz & Stegun 27.1, 27.8. */
-import { build, type Expression, Q, type Rational } from '../../expression/index.ts';
+import { build, type Expression, Q, type Rational, rationalOf } from '../../expression/index.ts';
 import { argument, bigO, call, exp, gamma, half, lift, log, minus, neg, over, pi, plus, pow, q, reciprocalGamma, scaled, square, times } from '../compose.ts';
 import type { FormalSeries, FunctionDescription, LocalForm, Place } from '../description.ts';
-import { asInteger, asMultipleOfPi, asRational } from '../exactForms.ts';
+import { asInteger, asMultipleOfPi } from '../exactForms.ts';
 import { alternating, atInfinity, F1, formalName, form, isAt, realLog, series } from '../formal.ts';
 import { bernoulli, factorial, harmonicNumber } from '../sequences.ts';
 import { etaAtInteger, zetaAtInteger } from './exactZeta.ts';
@@ -24,7 +24,7 @@ const zetaTree = (s: Expression): Expression => {
 /** At x = exp(mu), mu -> 0: DLMF 25.12.12 and, for s = n = 1, 2, ..., its limit with the logarithm. */
 function atOne(s: Expression, u: Expression): LocalForm {
   const mu = log(plus(1, u));
-  const exact = asRational(s);
+  const exact = rationalOf(s);
   const n = asInteger(s, 1000);
   const zetas = series(mu, (k) => {
     if (n !== null && n - k === 1) return Q.ZERO;
@@ -47,7 +47,7 @@ function atFar(s: Expression, x: Expression, direction: 1 | -1): LocalForm | nul
     return form(plus(...terms, times(n % 2 === 0 ? -1 : 1, F1)), [powerSum(s, over(1, x))], 'Inversion formula of Jonquière; DLMF 25.12.7 for order 2');
   }
   if (direction === 1 || n !== null) return null;
-  const exact = asRational(s);
+  const exact = rationalOf(s);
   const shifted = (k: number): Expression => (exact ? lift(Q.add(exact, Q.rational(1 - 2 * k))) : plus(s, 1 - 2 * k));
   const sum = series(over(1, square(w)), (k) => times(-2, eta(k), reciprocalGamma(shifted(k))), { divergent: true });
   return form(times(pow(w, s), F1), [sum], 'Sommerfeld expansion; DLMF 25.12.16 at large x', { subdominantDropped: true });
@@ -75,7 +75,7 @@ export const polylogDerivative: NonNullable<FunctionDescription['derivative']> =
   if (index !== 1) return null;
   const s = argument(args, 0);
   const x = argument(args, 1);
-  const exact = asRational(s);
+  const exact = rationalOf(s);
   const lower = exact ? lift(Q.subtract(exact, Q.ONE)) : minus(s, 1);
   return over(polylogValue([lower, x]) ?? call('polylog', lower, x), x);
 };
@@ -83,7 +83,7 @@ export const polylogDerivative: NonNullable<FunctionDescription['derivative']> =
 /** Orders 1, 0, -1, ... are elementary; Li_n at 0, 1, -1; Li_2(1/2), Li_3(1/2) (DLMF 25.12.6 and Lewin 1981). */
 export function polylogValue(args: readonly Expression[]): Expression | null {
   const [s = lift(2), x = lift(0)] = args;
-  const at = asRational(x);
+  const at = rationalOf(x);
   if (at && Q.isZero(at)) return lift(0);
   const n = asInteger(s, 1000);
   if (n === 1) return neg(log(minus(1, x)));
@@ -91,7 +91,7 @@ export function polylogValue(args: readonly Expression[]): Expression | null {
   if (!at) return null;
   if (Q.isOne(at)) {
     if (n !== null) return n >= 2 ? lift(zetaAtInteger(n)) : null;
-    const exact = asRational(s);
+    const exact = rationalOf(s);
     return exact && Q.compare(exact, Q.ONE) > 0 ? call('zeta', s) : null;
   }
   if (Q.equal(at, Q.MINUS_ONE)) return n === null ? neg(call('dirichletEta', s)) : neg(lift(etaAtInteger(n)));
@@ -109,7 +109,7 @@ function eulerianQuotient(n: number, x: Expression): Expression {
 /** Cl_2(theta) at the multiples of 2pi: -t log|t| + t + sum |B_2k| t^(2k+1)/(2k (2k+1)!) (Abramowitz & Stegun 27.8.2). */
 export function clausenLocal(_args: readonly Expression[], _index: number, place: Place): LocalForm | null {
   if (place.kind !== 'finite' || place.side === 'complex') return null;
-  const turn = asMultipleOfPi(place.center) ?? asRational(place.center);
+  const turn = asMultipleOfPi(place.center) ?? rationalOf(place.center);
   const isPeriod = turn && Q.isInteger(turn) && turn.num % 2n === 0n && (Q.isZero(turn) || asMultipleOfPi(place.center) !== null);
   if (!isPeriod) return null;
   const t = place.offset;

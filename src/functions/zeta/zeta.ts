@@ -1,8 +1,8 @@
 /** Riemann and Hurwitz zeta functions and derivatives. Sources: DLMF 25.2, 25.4, 25.6, 25.11. */
-import { build, type Expression, Q } from '../../expression/index.ts';
+import { build, type Expression, Q, rationalOf } from '../../expression/index.ts';
 import { argument, bigO, call, euler, exp, lift, log, minus, neg, over, pi, plus, pow, q, scaled, sin, times } from '../compose.ts';
 import type { FunctionDescription, LocalForm, Place } from '../description.ts';
-import { asInteger, asRational } from '../exactForms.ts';
+import { asInteger } from '../exactForms.ts';
 import { alternating, atInfinity, F1, F2, form, isAt, series, taylor } from '../formal.ts';
 import { polygammaTree } from '../gamma/gamma.ts';
 import { bernoulli, factorial, risingFactorial } from '../sequences.ts';
@@ -87,7 +87,7 @@ export function zetaDerivativeValue(args: readonly Expression[]): Expression | n
 /** Hurwitz zeta in a: zeta(s,a) ~ a^(1-s)/(s-1) + a^-s/2 + sum of B_2k/(2k)! (s)_(2k-1) a^(1-s-2k) (DLMF 25.11.43); a^-s + Taylor series at 0 (25.11.10). */
 export function hurwitzLocal(args: readonly Expression[], index: number, place: Place): LocalForm | null {
   const s = argument(args, 0);
-  const exact = asRational(s);
+  const exact = rationalOf(s);
   if (index !== 1 || (exact && Q.isOne(exact))) return null;
   const rising = (n: number): Expression => (exact ? lift(risingFactorial(exact, n)) : n === 0 ? lift(1) : times(...Array.from({ length: n }, (_, i) => plus(s, i))));
   if (place.kind === 'infinite') {
@@ -109,7 +109,7 @@ export function hurwitzLocal(args: readonly Expression[], index: number, place: 
   };
   const sum = taylor(place, (k) => times(Q.divide(alternating(k), Q.rational(factorial(k))), rising(k), rising(k).kind === 'number' && isZeroTree(rising(k)) ? 0 : zetaAt(k)));
   if (center) {
-    const at = asRational(center);
+    const at = rationalOf(center);
     return at && at.num <= 0n ? null : form(F1, [sum], 'DLMF 25.11.17');
   }
   // (s)_k zeta(s+k) has a finite limit where s + k = 1, which needs care: declined for s = 0, -1, -2, ...
@@ -120,7 +120,7 @@ const isZeroTree = (e: Expression): boolean => e.kind === 'number' && Q.isZero(e
 
 export function hurwitzValue(args: readonly Expression[]): Expression | null {
   const [s = lift(2), a = lift(1)] = args;
-  const at = asRational(a);
+  const at = rationalOf(a);
   if (at && Q.isOne(at)) return zetaValue([s]) ?? call('zeta', s);
   const n = asInteger(s, 60);
   if (n !== null && n >= 2) return times(Q.divide(alternating(n), Q.rational(factorial(n - 1))), polygammaTree(n - 1, a));

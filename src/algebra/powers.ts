@@ -207,8 +207,11 @@ function openPower(ctx: Context, base: Element, r: Rational, exponent: Exponent)
 export function requireNonZero(ctx: Context, a: Element, what: 'divisor' | 'argument of a logarithm' = 'divisor'): void {
   const zero = ctx.isZero(a);
   if (zero === 'no') return;
-  if (zero === 'yes') throw valueless(`${what === 'divisor' ? 'A division by zero' : 'The logarithm of zero'} has no value; choose another point or parameter.`);
-  throw undecided(`${what === 'divisor' ? 'A divisor' : 'The argument of a logarithm'} could not be shown to be non-zero; state an assumption that excludes zero.`);
+  const divides = what === 'divisor';
+  if (zero === 'yes') throw valueless(divides ? 'A division by zero has no value; choose another point or parameter.' : 'The logarithm of zero has no value; choose another point or parameter.');
+  throw undecided(
+    divides ? 'A divisor could not be shown to be non-zero; state an assumption that excludes zero.' : 'The argument of a logarithm could not be shown to be non-zero; state an assumption that excludes zero.',
+  );
 }
 
 export function divideElements(ctx: Context, a: Element, b: Element): Element {

@@ -41,19 +41,25 @@ export function lettersOf(f: Expression, assumptions: readonly Assumption[]): Le
 }
 
 /**
- * Plain capitals that an author may have meant as operators, where commuting changes the answer: two of them among exponentials and inverses that stand side by side
+ * Plain capitals that an author may have meant as operators, where commuting changes the answer: two of them among several exponentials and inverses that stand side by side
  * (`e^{\epsilon A} B e^{-\epsilon A}`, `P^{-1} A P`), or in a sum that is inverted by `^{-1}`. What is divided by is a number. Names in plain notation, sorted.
  */
 export function commutingCapitals(f: Expression, variable: Expression): readonly string[] {
   const numbers = new Set([...walk(f)].flatMap((n) => (n.kind === 'quotient' ? capitalsIn(n.denominator) : [])));
   const found = new Set<string>();
   for (const n of walk(f)) {
-    const places = n.kind === 'product' && n.factors.some(isOperatorShape) ? n.factors.filter((x) => capitalsIn(x).length > 0) : n.kind === 'power' && isInverse(n) && n.base.kind === 'sum' ? n.base.terms.filter((x) => capitalsIn(x).length > 0) : [];
+    const places = n.kind === 'product' && orderMatters(n.factors) ? n.factors.filter((x) => capitalsIn(x).length > 0) : n.kind === 'power' && isInverse(n) && n.base.kind === 'sum' ? n.base.terms.filter((x) => capitalsIn(x).length > 0) : [];
     const capitals = new Set(places.flatMap(capitalsIn).filter((name) => !numbers.has(name) && name !== letterName(variable)));
     if (places.length > 1 && capitals.size > 1) for (const name of capitals) found.add(name);
   }
   return [...found].sort();
 }
 const capitalsIn = (e: Expression): readonly string[] => [...walk(e)].flatMap((n) => (n.kind === 'symbol' && /^[A-Z](?:_|$)/.test(n.name) ? [n.name] : []));
+/** Two exponentials or inverses, or one with a capital on both of its sides: of `N e^{-E/T}` the terms are the same either way. */
+function orderMatters(factors: readonly Expression[]): boolean {
+  const shaped = factors.filter(isOperatorShape).length;
+  const names = factors.flatMap((x) => [...new Set(capitalsIn(x))]);
+  return shaped > 1 || (shaped === 1 && new Set(names).size < names.length);
+}
 const isInverse = (e: Extract<Expression, { kind: 'power' }>): boolean => (e.exponent.kind === 'negation' && e.exponent.operand.kind === 'number') || (e.exponent.kind === 'number' && e.exponent.value.num < 0n && e.exponent.value.den === 1n);
 const isOperatorShape = (e: Expression): boolean => capitalsIn(e).length > 0 && ((e.kind === 'power' && (isInverse(e) || (e.base.kind === 'constant' && e.base.name === 'e'))) || (e.kind === 'call' && e.function === 'exp'));

@@ -1,6 +1,6 @@
 /** The terms of a multiseries one after the other, in decreasing size. */
 import type { Element } from '../algebra/types.ts';
-import { build, type Expression, Q } from '../expression/index.ts';
+import { build, type Expression, freeSymbols, Q } from '../expression/index.ts';
 import { Declined } from '../outcome.ts';
 import { addElements, type Context, exactOf, isOscillating, isRational, type Multi, negateElement, nextTerm, nextTermOrOrder, oscillatingParts, plainText, type ScaleElement, Series } from '../series/index.ts';
 
@@ -41,11 +41,16 @@ export function* rawTerms(c: Context, m: Multi, outer: readonly Factor[] = []): 
   }
 }
 
-/** A constant that could not be compared with zero is shown as a term, with what was taken for granted. */
+/** A coefficient in parameters that could not be compared with zero is shown as a term, with what was taken for granted. */
 function isCertainlyZero(c: Context, e: Element): boolean {
   if (isRational(e)) return e.num === 0n;
   const truth = c.field.isZero(e);
-  if (truth === 'undecided') c.notes.assumptions.add(`${plainText(c.field.toExpression(e))} != 0`);
+  if (truth === 'undecided') {
+    const tree = c.field.toExpression(e);
+    // Nothing can be assumed of a number: it is zero or it is not.
+    if (freeSymbols(tree).length === 0) throw new Declined('undecided', 'It could not be decided whether a coefficient is zero; simplify the formula.');
+    c.notes.assumptions.add(`${plainText(tree)} != 0`);
+  }
   return truth === 'yes';
 }
 

@@ -45,7 +45,8 @@ function polynomialText(coefficients: readonly string[], letter: string, power: 
   const n = coefficients.length - 1;
   let text = '';
   coefficients.forEach((raw, i) => {
-    const c = raw.replace(/[()\s{}]/g, '').replace('−', '-');
+    const whole = /^[({\s]*([-−]?\d+)[)}\s]*$/.exec(raw)?.[1];
+    const c = whole?.replace('−', '-') ?? (/^\\?[A-Za-z]+$/.test(raw) ? `${raw} ` : `(${raw})`);
     if (c === '0') return;
     const negative = c.startsWith('-');
     const size = negative ? c.slice(1) : c;

@@ -10,7 +10,7 @@ import type { Expansion, ExpansionTerm, SmallProblem, SmallQuantity } from './ex
 import { inVariable } from './expand.ts';
 import { factorTree, rawTerms } from './flatten.ts';
 import { expandSmallOperators, lettersOf } from './noncommuting/index.ts';
-import { openSession } from './session.ts';
+import { excludesValuesOfFresh, openSession } from './session.ts';
 import { openContext } from './open-side.ts';
 import { expandScaled } from './scaled.ts';
 import { expandSmallVectors, hasVectors, isVectorFormula, requireLinearInFunctions } from './vectors/index.ts';

@@ -8,6 +8,7 @@ import { type Evaluate, bind, type Session } from '../session.ts';
 import { completeIntegral, SHIFT } from './complete.ts';
 import { byMoments } from './moments.ts';
 import { regularOn } from './monotone.ts';
+import { finiteIntegral } from './regular.ts';
 import { rescaled } from './rescale.ts';
 import { integrableAt, laplaceForm, watson } from './watson.ts';
 
@@ -115,6 +116,7 @@ function parametric(s: Session, e: IntegralNode, name: string, lower: Expression
   const balanced = grows ? rescaled(s, e.body, name, s.context.local) : null;
   const form = balanced ?? laplaceForm(e.body, name, moves);
   if (form && growth(s.context, evaluate(s, form.lambda)) === 'large') return watson(s, form, name, from, to, evaluate);
+  if (from !== null && to !== null) return finiteIntegral(s, e.body, name, from, to, evaluate);
   return byMoments(s, e.body, name, from, to, evaluate);
 }
 

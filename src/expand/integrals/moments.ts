@@ -1,7 +1,7 @@
 /**
- * Integrals whose integrand is a power series in the variable with polynomial coefficients: each coefficient is integrated by moments.
+ * Integrals over an infinite interval whose integrand is a power series in the variable with polynomial coefficients: each coefficient is integrated by moments.
  * Factors that mix variable and integration variable are (1 + x q)^a, exp(x q), sin(x q), cos(x q), log(1 + x q) with polynomials q, for which the remainder of the series
- * is bounded by a polynomial in v: on an infinite interval this needs x q >= 0 (x q <= 0 in an exponential).
+ * is bounded by a polynomial in v: this needs x q >= 0 (x q <= 0 in an exponential).
  */
 import type { Element } from '../../algebra/types.ts';
 import { build, children, dependsOn, type Expression, Q } from '../../expression/index.ts';
@@ -22,11 +22,9 @@ export function byMoments(s: Session, body: Expression, v: string, low: Expressi
   const mixed: Expression[] = [];
   const decays: Expression[] = [];
   if (!factors(body, v, moves, fixed, mixed, decays)) throw refuse();
-  const infinite = low === null || high === null;
-  for (const f of mixed) requireClass(s, f, v, low, high, infinite, moves, evaluate);
-  const weight = infinite ? weightOf(s, decays, v, evaluate) : null;
-  const whole = infinite ? build.product(...fixed, ...mixed) : build.product(...fixed, ...mixed, ...decays.map((d) => build.power(build.constant('e'), d)));
-  const series = evaluate(s, whole);
+  for (const f of mixed) requireClass(s, f, v, low, high, moves, evaluate);
+  const weight = weightOf(s, decays, v, evaluate);
+  const series = evaluate(s, build.product(...fixed, ...mixed));
   if (!(series instanceof Series)) return integrated(s, series, v, low, high, weight, evaluate);
   const stream = mapStream(series.stream, (t) => {
     if (t.order) return t;
@@ -62,7 +60,7 @@ function factors(e: Expression, v: string, moves: (e: Expression) => boolean, fi
 }
 
 /** The factor must be one of the classes named above, with argument x q(v). */
-function requireClass(s: Session, f: Expression, v: string, low: Expression | null, high: Expression | null, infinite: boolean, moves: (e: Expression) => boolean, evaluate: Evaluate): void {
+function requireClass(s: Session, f: Expression, v: string, low: Expression | null, high: Expression | null, moves: (e: Expression) => boolean, evaluate: Evaluate): void {
   const c = s.context;
   const small = (e: Expression, wanted: 1 | -1 | 0): void => {
     // e = (variable part) * q(v), q a polynomial, the variable part small.
@@ -70,7 +68,7 @@ function requireClass(s: Session, f: Expression, v: string, low: Expression | nu
     if (!parts) throw refuse();
     const size = evaluate(s, parts.variable);
     if (growth(c, size) !== 'small') throw refuse();
-    if (!infinite || wanted === 0) return;
+    if (wanted === 0) return;
     const range = { variable: v, low, high, field: c.field };
     const sign = weakSign(range, parts.polynomial);
     const direction = eventualSign(c, size);
@@ -133,18 +131,12 @@ function weightOf(s: Session, decays: readonly Expression[], v: string, evaluate
 }
 
 /** The integral of coefficient(v) times the weight over the interval. */
-function integrated(s: Session, coefficient: Element, v: string, low: Expression | null, high: Expression | null, weight: Weight | null, evaluate: Evaluate): Element {
+function integrated(s: Session, coefficient: Element, v: string, low: Expression | null, high: Expression | null, weight: Weight, evaluate: Evaluate): Element {
   const c = s.context;
   const { field } = c;
   let total: Element = Q.ZERO;
   for (const t of polynomialIn(s, field.toExpression(coefficient), v, evaluate)) {
-    let moment: Element;
-    if (weight === null) {
-      const n = Q.rational(t.power + 1n);
-      const at = (end: Expression): Element => field.power(field.fromExpression(end), n);
-      moment = field.divide(field.subtract(at(high as Expression), at(low as Expression)), n);
-    } else moment = momentOn(c, weight, t.power, low, high);
-    total = addElements(c, total, multiplyElements(c, t.coefficient, moment));
+    total = addElements(c, total, multiplyElements(c, t.coefficient, momentOn(c, weight, t.power, low, high)));
   }
   return total;
 }

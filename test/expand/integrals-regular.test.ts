@@ -17,6 +17,9 @@ describe('expanded term by term', () => {
     ['\\int_0^1 e^{-xt^2}\\,dt', '1 - x/3 + x^2/10 - x^3/42', '4'],
     ['\\int_0^1\\cos(xt)\\sqrt{t}\\,dt', '2/3 - x^2/7 + x^4/132 - x^6/5400', '8'],
     ['\\int_0^1\\frac{e^{xt}}{\\sqrt{t}}\\,dt', '2 + 2*x/3 + x^2/5 + x^3/21', '4'], // an integrable end
+    ['\\int_0^1\\frac{\\sin(xt)}{t}\\,dt', 'x - x^3/18 + x^5/600 - x^7/35280', '9'], // Si, DLMF 6.6.5
+    ['\\int_0^1\\frac{1-\\cos(xt)}{t^2}\\,dt', 'x^2/2 - x^4/72 + x^6/3600 - x^8/282240', '10'], // the cosine series, term by term
+    ['\\int_1^2\\frac{e^{xt}}{t}\\,dt', 'log(2) + x + 3*x^2/4 + 7*x^3/18', '4'],
     ['\\int_0^1\\frac{dt}{2+t+x}', 'log(3/2) - x/6 + 5*x^2/72 - 19*x^3/648', '4'], // log(3 + x) - log(2 + x)
   ] as const)('%s', (text, sum, power) => {
     expectExpansion(expansionOf(text), sum, power);
@@ -61,6 +64,9 @@ describe('what is not proven is declined', () => {
     '\\int_0^{\\pi}\\frac{e^{xt}}{\\cos t}\\,dt',
     '\\int_0^1\\frac{dt}{c+t+x}', // c may be -1/2
     '\\int_{-1}^1\\frac{e^{xt}}{t^2}\\,dt',
+    '\\int_0^1\\frac{\\sin(xt)}{t^2}\\,dt', // vanishes once only
+    '\\int_0^1\\frac{\\cos(xt)-1}{t^3}\\,dt',
+    '\\int_0^1\\frac{\\sin(x\\sqrt{t})}{t^2}\\,dt',
     '\\int_{-1}^1 e^{xt}\\sqrt{t}\\,dt',
   ])('%s', (text) => {
     const found = outcomeOf(latex(text), { side: 'right' });

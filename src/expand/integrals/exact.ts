@@ -1,6 +1,7 @@
 /** Definite integrals with an elementary antiderivative: sums of powers of v and of a linear function of it, square roots and quotients of one quadratic, and sums of powers times exponentials and oscillations (so also products of powers of sines and cosines: Wallis, DLMF 4.26). */
 import type { Element } from '../../algebra/types.ts';
 import { build, type Expression, Q, substitute, walk } from '../../expression/index.ts';
+import { Declined } from '../../outcome.ts';
 import { addElements, type Context, isRational, isZero, multiplyElements, negateElement } from '../../series/index.ts';
 import { type ExponentialPolynomial, exponentOf, modesOf, treeOf } from '../differential/exponential-polynomial.ts';
 import { addPolynomials, derivativeOf, type Polynomial, scalePolynomial } from '../differential/operator.ts';
@@ -56,11 +57,20 @@ function overModes(c: Context, body: Expression, { variable, low, high }: Closed
   const { field, notes } = c;
   // The exponentials are complex on the way only.
   const before = notes.complex;
-  const primitive = treeOf(c, antiderivative(c, modesOf(c, body, variable, () => null)), build.symbol(variable));
+  const primitive = treeOf(c, antiderivative(c, modesIn(c, body, variable)), build.symbol(variable));
   const at = (end: Expression): Element => field.fromExpression(substitute(primitive, variable, end));
   const value = field.subtract(at(high), at(low));
   notes.complex = before || (!isRational(value) && field.isReal(value) !== 'yes');
   return value;
+}
+
+function modesIn(c: Context, body: Expression, variable: string): ExponentialPolynomial {
+  try {
+    return modesOf(c, body, variable, () => null);
+  } catch (error) {
+    if (error instanceof Declined && error.failure.code === 'no-expansion') throw refuse();
+    throw error;
+  }
 }
 
 /** Mode by mode: of p exp(lambda v) it is exp(lambda v) times the sum of (-1)^k p^(k)/lambda^(k+1). */

@@ -1,9 +1,11 @@
 /** Integrals over a finite interval whose integrand is regular in the small quantity: expanded uniformly and integrated exactly, term by term. */
 import { build, children, dependsOn, type Expression, freeSymbols, Q, substitute } from '../../expression/index.ts';
+import { differentiate } from '../../functions/index.ts';
 import { Declined } from '../../outcome.ts';
-import { type Context, mapStream, type Multi, multiply, Series, sumOf, unnamed } from '../../series/index.ts';
+import { type Context, isKnownZero, mapStream, type Multi, multiply, Series, sumOf, unnamed } from '../../series/index.ts';
 import { type Evaluate, excludesValuesOfFresh, freshSymbol, type Session } from '../session.ts';
 import { exactIntegral } from './exact.ts';
+import { type Range, regularOn } from './monotone.ts';
 import { refuse } from './polynomial.ts';
 import { type ClosedInterval, isBounded, requireUniform } from './uniform.ts';
 
@@ -57,8 +59,11 @@ function expandedFirst(s: Session, term: Expression, over: ClosedInterval, evalu
   const moves = (e: Expression): boolean => (e.kind === 'symbol' ? e.name !== over.variable && s.bindings.has(e.name) : e.kind === 'order' || children(e).some(moves));
   const factors: Factors = { outside: [], fixed: [], mixed: [] };
   sort(term, over.variable, moves, factors);
-  requireIntegrable(s, factors.fixed, over);
   for (const f of factors.mixed) requireUniform(s, f, over, moves, evaluate);
+  const zeros = zerosNeeded(s, factors.fixed, over);
+  if (zeros > 0 && !vanishesAtZero(s, build.product(...factors.mixed), zeros, over.variable, moves, evaluate)) {
+    throw new Declined('no-expansion', 'The integral diverges at 0 where the integrand is taken term by term; correct its limits or split it.');
+  }
   const fixed = build.product(...factors.fixed);
   const inner = integrated(c, evaluate(s, build.product(...factors.mixed)), fixed, over);
   return multiply(c, evaluate(s, build.product(...factors.outside)), inner);
@@ -77,17 +82,36 @@ function sort(e: Expression, v: string, moves: (e: Expression) => boolean, into:
   } else into.mixed.push(inverse ? build.power(e, -1) : e);
 }
 
-/** Bounded factors, and powers of the variable that are integrable together. */
-function requireIntegrable(s: Session, fixed: readonly Expression[], over: ClosedInterval): void {
+/** How often the rest of the integrand must vanish at 0 so that the factors in v alone, bounded but for powers of v, leave it integrable. */
+function zerosNeeded(s: Session, fixed: readonly Expression[], over: ClosedInterval): number {
   const { field } = s.context;
+  const [low, high] = [over.low, over.high].map((end) => field.sign(field.fromExpression(end)));
+  const away = low === high && (low === 1 || low === -1);
   let total = Q.ZERO;
   for (const f of fixed.flatMap(flattened)) {
     if (isBounded(s, f, over)) continue;
     const exponent = f.kind === 'power' && f.base.kind === 'symbol' ? field.asRational(field.fromExpression(f.exponent)) : null;
     if (!exponent) throw refuse();
-    total = Q.add(total, exponent);
+    if (!away) total = Q.add(total, exponent);
   }
-  if (Q.compare(total, Q.MINUS_ONE) <= 0) throw new Declined('no-expansion', 'The integral diverges at 0 where the integrand is taken term by term; correct its limits or split it.');
+  let zeros = 0;
+  while (Q.compare(Q.add(total, Q.rational(zeros)), Q.MINUS_ONE) <= 0 && zeros <= MOST_ZEROS) zeros += 1;
+  return zeros;
+}
+
+const MOST_ZEROS = 12;
+
+/** Whether e, proven to expand uniformly, is analytic in both at v = 0 and vanishes there with its first derivatives in v, whatever the small quantity is: then v^zeros can be divided out of it uniformly. */
+function vanishesAtZero(s: Session, e: Expression, zeros: number, v: string, moves: (e: Expression) => boolean, evaluate: Evaluate): boolean {
+  const everywhere: Range = { variable: v, low: null, high: null, field: s.context.field };
+  const analytic = (node: Expression): boolean => (moves(node) ? children(node).every(analytic) : regularOn(everywhere, node));
+  if (zeros > MOST_ZEROS || !analytic(e)) return false;
+  let derivative: Expression | null = e;
+  for (let k = 0; k < zeros; k += 1) {
+    if (!derivative || !isKnownZero(s.context, evaluate(s, substitute(derivative, v, build.number(0))))) return false;
+    derivative = differentiate(derivative, v);
+  }
+  return true;
 }
 
 function flattened(e: Expression): readonly Expression[] {

@@ -19,6 +19,8 @@ describe('expanded term by term', () => {
     ['\\int_0^1\\frac{e^{xt}}{\\sqrt{t}}\\,dt', '2 + 2*x/3 + x^2/5 + x^3/21', '4'], // an integrable end
     ['\\int_0^1\\frac{\\sin(xt)}{t}\\,dt', 'x - x^3/18 + x^5/600 - x^7/35280', '9'], // Si, DLMF 6.6.5
     ['\\int_0^1\\frac{1-\\cos(xt)}{t^2}\\,dt', 'x^2/2 - x^4/72 + x^6/3600 - x^8/282240', '10'], // the cosine series, term by term
+    ['\\int_0^1\\ln(t)\\,e^{xt}\\,dt', '-1 - x/4 - x^2/18 - x^3/96', '4'], // -sum x^n/(n! (n + 1)^2)
+    ['\\int_0^1\\frac{\\ln(t)^2}{1+xt}\\,dt', '2 - x/4 + 2*x^2/27 - x^3/32', '4'], // the integral of t^n log(t)^2 is 2/(n + 1)^3
     ['\\int_1^2\\frac{e^{xt}}{t}\\,dt', 'log(2) + x + 3*x^2/4 + 7*x^3/18', '4'],
     ['\\int_0^1\\frac{dt}{2+t+x}', 'log(3/2) - x/6 + 5*x^2/72 - 19*x^3/648', '4'], // log(3 + x) - log(2 + x)
   ] as const)('%s', (text, sum, power) => {
@@ -42,6 +44,7 @@ describe('integrated first where the integrand becomes singular', () => {
   test.each([
     ['\\int_0^1\\frac{dt}{\\sqrt{t^2+x^2}}', '-log(x) + log(2) + x^2/4', '4'], // arsinh(1/x), DLMF 4.37.1
     ['\\int_0^1\\frac{dt}{t+x}', '-log(x) + x - x^2/2', '3'], // log(1 + 1/x)
+    ['\\int_0^1\\ln(t+x)\\,dt', '-1 - x*log(x) + x', '2'], // (1 + x) log(1 + x) - x log x - 1
     ['\\int_0^1\\frac{x}{t^2+x^2}\\,dt', 'pi/2 - x + x^3/3', '5'], // arctan(1/x)
     ['\\int_0^1\\frac{x^2\\,dt}{(t^2+x^2)^{3/2}}', '1 - x^2/2 + 3*x^4/8', '6'], // 1/sqrt(1 + x^2)
   ] as const)('%s', (text, sum, power) => {
@@ -64,6 +67,7 @@ describe('what is not proven is declined', () => {
     '\\int_0^{\\pi}\\frac{e^{xt}}{\\cos t}\\,dt',
     '\\int_0^1\\frac{dt}{c+t+x}', // c may be -1/2
     '\\int_{-1}^1\\frac{e^{xt}}{t^2}\\,dt',
+    '\\int_0^1\\frac{\\ln t}{t+x^2t^2}\\,dt', // diverges at 0
     '\\int_0^1\\frac{\\sin(xt)}{t^2}\\,dt', // vanishes once only
     '\\int_0^1\\frac{\\cos(xt)-1}{t^3}\\,dt',
     '\\int_0^1\\frac{\\sin(x\\sqrt{t})}{t^2}\\,dt',

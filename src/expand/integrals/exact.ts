@@ -1,6 +1,6 @@
-/** Definite integrals with an elementary antiderivative: sums of powers of v and of a linear function of it, square roots and quotients of one quadratic, and sums of powers times exponentials and oscillations (so also products of powers of sines and cosines: Wallis, DLMF 4.26). */
-import type { Element } from '../../algebra/types.ts';
-import { build, type Expression, Q, substitute, walk } from '../../expression/index.ts';
+/** Definite integrals with an elementary antiderivative: sums of powers (and logarithms) of v or of a linear function of it, square roots and quotients of one quadratic, and sums of powers times exponentials and oscillations (so also products of powers of sines and cosines: Wallis, DLMF 4.26). */
+import type { Element, Field } from '../../algebra/types.ts';
+import { build, dependsOn, type Expression, mapChildren, Q, type Rational, sameExpression, substitute, walk } from '../../expression/index.ts';
 import { Declined } from '../../outcome.ts';
 import { addElements, type Context, isRational, isZero, multiplyElements, negateElement } from '../../series/index.ts';
 import { type ExponentialPolynomial, exponentOf, modesOf, treeOf } from '../differential/exponential-polynomial.ts';
@@ -14,7 +14,7 @@ import type { ClosedInterval } from './uniform.ts';
 export function exactIntegral(c: Context, body: Expression, over: ClosedInterval): Element {
   const powers = powersOf(c.field, body, over.variable);
   if (powers) return overPowers(c, powers, over);
-  return byLinear(c, body, over) ?? byQuadratic(c, body, over) ?? overModes(c, body, over);
+  return byLogarithm(c, body, over) ?? byLinear(c, body, over) ?? byQuadratic(c, body, over) ?? overModes(c, body, over);
 }
 
 function overPowers(c: Context, { terms, positive }: PowerSum, { low, high }: ClosedInterval): Element {
@@ -47,10 +47,56 @@ function byLinear(c: Context, body: Expression, { variable, low, high }: ClosedI
     if (!slope || !constant || line?.terms.length !== 2 || field.isZero(slope.coefficient) !== 'no') continue;
     const at = (end: Expression): Expression => substitute(node, variable, end);
     const back = build.quotient(build.difference(build.symbol(variable), field.toExpression(constant.coefficient)), field.toExpression(slope.coefficient));
-    const powers = powersOf(field, substitute(body, variable, back), variable);
-    if (powers) return field.divide(overPowers(c, powers, { variable, low: at(low), high: at(high) }), slope.coefficient);
+    const within = { variable, low: at(low), high: at(high) };
+    // The function itself where it stands, so that its logarithm is one of the new variable.
+    const turned = substitute(replaced(body, node, build.symbol(LINE)), variable, back);
+    const inLine = substitute(turned, LINE, build.symbol(variable));
+    const powers = powersOf(field, inLine, variable);
+    const value = powers ? overPowers(c, powers, within) : byLogarithm(c, inLine, within);
+    if (value) return field.divide(value, slope.coefficient);
   }
   return null;
+}
+
+const LINE = "line'0";
+const LOGARITHM = "log'0";
+
+const replaced = (e: Expression, old: Expression, by: Expression): Expression => (sameExpression(e, old) ? by : mapChildren(e, (child) => replaced(child, old, by)));
+
+/** Sums of powers of v and of log v, over v >= 0; null for others. */
+function byLogarithm(c: Context, body: Expression, over: ClosedInterval): Element | null {
+  const { field } = c;
+  const v = over.variable;
+  const marked = replaced(body, build.call('log', build.symbol(v)), build.symbol(LOGARITHM));
+  if (!dependsOn(marked, LOGARITHM)) return null;
+  const [low, high] = [over.low, over.high].map((end) => field.fromExpression(end)) as [Element, Element];
+  if (![low, high].every((end) => field.sign(end) === 0 || field.sign(end) === 1)) return null;
+  const byPower = powersOf(field, marked, LOGARITHM);
+  if (!byPower || byPower.positive) return null;
+  let total: Element = Q.ZERO;
+  for (const { exponent: k, coefficient } of byPower.terms) {
+    const powers = k.den === 1n && k.num >= 0n ? powersOf(field, field.toExpression(coefficient), v) : null;
+    if (!powers) return null;
+    for (const term of powers.terms) {
+      const n = Q.add(term.exponent, Q.ONE);
+      if (n.num <= 0n) return null;
+      const at = (end: Element): Element => (isZero(c, end) ? Q.ZERO : logarithmicPrimitive(field, end, n, k.num));
+      total = addElements(c, total, multiplyElements(c, term.coefficient, field.subtract(at(high), at(low))));
+    }
+  }
+  return total;
+}
+
+/** The antiderivative of w^(n-1) log(w)^k that vanishes at 0, by parts. */
+function logarithmicPrimitive(field: Field, w: Element, n: Rational, k: bigint): Element {
+  const log = field.log(w);
+  let value: Element = field.divide(field.power(w, n), n);
+  let power: Element = value;
+  for (let j = 1n; j <= k; j += 1n) {
+    power = field.multiply(power, log);
+    value = field.subtract(power, field.multiply(Q.divide(Q.rational(j), n), value));
+  }
+  return value;
 }
 
 function overModes(c: Context, body: Expression, { variable, low, high }: ClosedInterval): Element {

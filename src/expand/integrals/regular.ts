@@ -89,7 +89,8 @@ function zerosNeeded(s: Session, fixed: readonly Expression[], over: ClosedInter
   const away = low === high && (low === 1 || low === -1);
   let total = Q.ZERO;
   for (const f of fixed.flatMap(flattened)) {
-    if (isBounded(s, f, over)) continue;
+    // Where a power is integrable, it is so with a logarithm.
+    if (isBounded(s, f, over) || isLogarithm(f)) continue;
     const exponent = f.kind === 'power' && f.base.kind === 'symbol' ? field.asRational(field.fromExpression(f.exponent)) : null;
     if (!exponent) throw refuse();
     if (!away) total = Q.add(total, exponent);
@@ -98,6 +99,10 @@ function zerosNeeded(s: Session, fixed: readonly Expression[], over: ClosedInter
   while (Q.compare(Q.add(total, Q.rational(zeros)), Q.MINUS_ONE) <= 0 && zeros <= MOST_ZEROS) zeros += 1;
   return zeros;
 }
+
+/** A whole power of log v. */
+const isLogarithm = (e: Expression): boolean =>
+  e.kind === 'power' && e.exponent.kind === 'number' && Q.isInteger(e.exponent.value) && e.exponent.value.num > 0n ? isLogarithm(e.base) : e.kind === 'call' && e.function === 'log' && e.args[0]?.kind === 'symbol';
 
 const MOST_ZEROS = 12;
 

@@ -19,9 +19,15 @@ export async function until<T>(what: string, look: () => T | Promise<T>, patienc
   }
 }
 
+/** A closing that the case before asked for can still be under way and take the new document with it: then it is opened again. */
 export async function open(language: string, content: string): Promise<vscode.TextEditor> {
-  const document = await vscode.workspace.openTextDocument({ language, content });
-  return vscode.window.showTextDocument(document);
+  for (let tries = 1; ; tries += 1) {
+    const document = await vscode.workspace.openTextDocument({ language, content });
+    const editor = await vscode.window.showTextDocument(document);
+    await new Promise((resolve) => setTimeout(resolve, 30 * tries));
+    if (!document.isClosed && document.getText() === content) return editor;
+    check(tries < 5, 'the document does not stay open');
+  }
 }
 
 /** Selects the first occurrence of `text`. */

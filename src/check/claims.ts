@@ -14,6 +14,8 @@ export interface Claim {
   readonly span: Span;
   /** The side printed directly before, where it is another form of the same chain. */
   readonly neighbour: Expression | null;
+  /** The printed side is the variable alone (sin x ~ x): meant as an expansion only where words of smallness or accuracy stand beside. */
+  readonly bare?: true;
 }
 
 const COMPARING: ReadonlySet<Relation> = new Set<Relation>(['=', 'about', 'tilde', 'to', 'define']);
@@ -35,9 +37,13 @@ export function claimsOf(chain: RelationNode): readonly Claim[] {
     if (!COMPARING.has(relation)) return;
     const [left, right] = [sides[i], sides[i + 1]];
     if (!left || !right || hasFactorDots(right) || hasFactorDots(left)) return;
-    if (isBareName(right) && !isBareName(left)) {
+    if (isBareName(right) && !isBareName(left) && hasMarks(left)) {
       // The expansion printed first: x - x^3/6 + O(x^5) = f.
-      if (hasMarks(left) && i === 0) out.push({ function: null, name: right, side: left, relation, span: spanOf(left, right), neighbour: null });
+      if (i === 0) out.push({ function: null, name: right, side: left, relation, span: spanOf(left, right), neighbour: null });
+      return;
+    }
+    if (right.kind === 'symbol' && relation === 'about' && isTranscendental(left, right.name)) {
+      out.push({ function: left, name: null, side: right, relation, span: spanOf(left, right), neighbour: null, bare: true });
       return;
     }
     if (isBareName(right)) return;

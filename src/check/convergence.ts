@@ -2,7 +2,7 @@
 import { expand } from '../expand/index.ts';
 import { build, dependsOn, Q, type Expression, type Rational, type Span } from '../expression/index.ts';
 import { readFormula } from '../read/index.ts';
-import { intervalOf } from './accuracy.ts';
+import { intervalOf } from './intervals.ts';
 import type { Setting } from './context.ts';
 import { enclose } from './enclose.ts';
 

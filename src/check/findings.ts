@@ -2,7 +2,7 @@
 import { build, dependsOn, freeSymbols, mapChildren, Q, walk, type Expression, type Span } from '../expression/index.ts';
 import type { Finding } from '../protocol.ts';
 import { toPlain } from '../write/index.ts';
-import { judgeAccuracy, statementIn } from './accuracy.ts';
+import { judgeAccuracy } from './accuracy.ts';
 import { type Accused, blame, isOneChangeAway } from './blame.ts';
 import { type Claim, isTranscendental } from './claims.ts';
 import { regionBeside, regionError } from './convergence.ts';
@@ -16,6 +16,7 @@ import { notationOf, writeIn } from './notation.ts';
 import type { Setting } from './context.ts';
 import { compare, compareSizes, leading } from './size.ts';
 import { settingsFor, type Around, type Asked, type Choice } from './setting.ts';
+import { lastSentence, type Statement, statementAround } from './statements.ts';
 import { hasMarks, withoutMarks } from './truncated.ts';
 
 export interface Place {
@@ -24,6 +25,8 @@ export interface Place {
   readonly around: Around;
   /** Where the next claim of the text begins: what stands behind that belongs to it. Absent: there is none. */
   readonly until?: number;
+  /** Where the claim before it ends. Absent: there is none. */
+  readonly since?: number;
   /** Files that the document refers to and that could not be read. */
   readonly absent?: readonly string[];
 }
@@ -50,7 +53,9 @@ export function findingOf(printed: Claim, given: Expression, asked: Asked, place
   if (!main) return options.lenient === undefined ? fittedFinding(printed, given, asked, place) : [];
   const region = main.setting && main.finding.verdict === 'holds' && options.lenient === undefined ? regionFinding(printed, given, main.setting, place) : null;
   if (region) return [main.finding, region];
-  const accuracy = main.setting && options.lenient === undefined ? accuracyFinding(printed, given, main.setting, place) : null;
+  const statement = main.setting && options.lenient === undefined ? statementOf(printed, main.setting, place) : null;
+  if (statement && !statement.interval && statement.doubt === null && main.finding.verdict === 'holds') return [{ ...main.finding, reason: `${main.finding.reason} ${NO_INTERVAL}` }];
+  const accuracy = main.setting && statement && accuracyFinding(statement, printed, given, main.setting, place);
   // A fitted polynomial is judged by the accuracy that is claimed for it.
   if (accuracy && accuracy.verdict !== 'undecided' && main.finding.verdict === 'fails' && main.fitted) return [accuracy];
   return accuracy ? [main.finding, accuracy] : [main.finding];
@@ -60,7 +65,8 @@ export function findingOf(printed: Claim, given: Expression, asked: Asked, place
 function fittedFinding(printed: Claim, given: Expression, asked: Asked, place: Place): readonly Finding[] {
   if (printed.relation === 'define' || hasMarks(printed.side) || !hasDecimals(printed.side)) return [];
   const [first] = settingsFor(given, printed.side, asked, place.around).filter((c) => isTranscendental(given, c.setting.variable));
-  const accuracy = first && accuracyFinding(printed, given, first.setting, place);
+  const statement = first && statementOf(printed, first.setting, place);
+  const accuracy = statement && accuracyFinding(statement, printed, given, first.setting, place);
   return accuracy && accuracy.verdict !== 'undecided' ? [accuracy] : [];
 }
 
@@ -128,21 +134,41 @@ function mainFinding(printed: Claim, given: Expression, asked: Asked, place: Pla
   return settled(failing(claim, f, best.choice.setting, best.judgement, place), best.choice.setting, claim.side);
 }
 
-/** The tolerance stated beside the claim, with the interval it is stated for. */
-function accuracyFinding(printed: Claim, given: Expression, setting: Setting, place: Place): Finding | null {
+const NO_INTERVAL = 'The stated accuracy is not judged, since no interval is named beside it.';
+
+/** The tolerance stated in the sentence of the claim, or in one behind it that goes on about the error. */
+function statementOf(printed: Claim, setting: Setting, { text, formula, around, since, until }: Place): Statement | null {
+  const { start } = formula.span;
   const from = printed.span.end;
-  const end = Math.min(place.text.length, Math.max(place.formula.span.end, from) + ACCURACY_REACH, place.until ?? Infinity);
-  const stop = place.text.slice(from, end).search(OTHER_SENTENCE);
-  const statement = statementIn(place.text, from, stop < 0 ? end : from + stop, place.around.conditions, setting.variable);
-  if (!statement) return null;
+  const end = Math.min(text.length, Math.max(formula.span.end, from) + ACCURACY_REACH, until ?? Infinity);
+  const stop = text.slice(from, end).search(OTHER_SENTENCE);
+  const first = Math.max(start - around.before.length, since ?? 0);
+  return statementAround({
+    text,
+    claim: printed.span,
+    from: first >= start ? start : first + lastSentence(text.slice(first, start)),
+    to: stop < 0 ? end : from + stop,
+    since: since ?? null,
+    until: until ?? null,
+    conditions: around.conditions,
+    variable: setting.variable,
+    small: typeof setting.point === 'object' && setting.point.kind === 'number' && Q.isZero(setting.point.value),
+  });
+}
+
+/** The verdict on a stated tolerance; null where no interval is stated. */
+function accuracyFinding(statement: Statement, printed: Claim, given: Expression, setting: Setting, place: Place): Finding | null {
+  const { interval, doubt } = statement;
+  if (!interval) return null;
   const { f, claim } = prepared(given, printed, setting);
-  const verdict = judgeAccuracy(statement, f, withoutMarks(claim.side), setting);
+  const judged = judgeAccuracy(statement, interval, f, withoutMarks(claim.side), setting);
+  const verdict = doubt !== null ? { kind: 'undecided' as const, reason: doubt } : judged;
   const base = { ...statement.place, claim: printed.span, found: '', fix: null, ...labelOf(place) };
   switch (verdict.kind) {
     case 'holds':
       return { ...base, verdict: 'holds', severity: 'none', reason: `Holds: the error on this interval is proved to be at most ${verdict.error}.` };
     case 'fails':
-      return { ...base, verdict: 'fails', severity: 'error', reason: `The error on this interval reaches ${verdict.error}.`, found: verdict.error, fix: { ...statement.place, text: statement.percent ? verdict.text.replace('%', statement.printed.includes('\\%') ? '\\%' : '%') : verdict.text } };
+      return { ...base, verdict: 'fails', severity: 'error', reason: `The error on this interval reaches ${verdict.error}.`, found: verdict.error, fix: statement.plain ? { ...statement.place, text: statement.percent ? verdict.error.replace('%', statement.printed.includes('\\%') ? '\\%' : '%') : verdict.error } : null };
     case 'undecided':
       return { ...base, verdict: 'undecided', severity: 'hint', reason: verdict.reason };
   }

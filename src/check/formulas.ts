@@ -129,7 +129,7 @@ function commentFormulas(text: string, region: Region): readonly Place[] {
 const RELATION = /~=|≈|∼|≃|(?<![<>=!:+\-*/])=(?!=)|\\approx|\\sim(?:eq)?(?![a-z])|(?<=\s)~(?=\s)/;
 
 /** Running text that goes on behind a formula. */
-const WORDS_AFTER = /\s(?:for|when|where|if|with|near|around|which|so|and|using|gives?|since|because|valid|while|to avoid)\s/;
+const WORDS_AFTER = /\s(?:for|when|where|if|with|near|around|which|so|and|using|gives?|since|because|valid|while|within|accurate|correct|to avoid|to within|better than|on)\s/;
 
 /** In each line with a relation, the longest stretch that is a formula; lines that start with a relation or a sign go on with the one before. */
 function proseFormulas(text: string, from: number, to: number): readonly Place[] {

@@ -14,6 +14,7 @@ import { isGridName } from './normalise.ts';
 import { quantitiesNamed } from './quantities.ts';
 import { remarkFinding, remarksIn } from './remarks.ts';
 import type { Asked } from './setting.ts';
+import { lastSentence, SENTENCE } from './statements.ts';
 import { hasMarks } from './truncated.ts';
 
 export { CheckMemory } from './memory.ts';
@@ -83,6 +84,7 @@ function* checking(parts: CheckParts, budget: Budget): Generator<void, Checked> 
   const request = signatureOf([parts.language, absent, asked.variable, asked.point, asked.side, asked.assumptions, parts.of, parts.variable]);
   const claims = found.map((formula) => ({ formula, claims: stillClaims(formula, given) }));
   const starts = claims.flatMap((c) => c.claims.filter((claim) => claim.function !== null || hasMarks(claim.side)).map((claim) => claim.span.start + c.formula.by)).sort((a, b) => a - b);
+  const ends = claims.flatMap((c) => c.claims.filter((claim) => claim.function !== null || hasMarks(claim.side)).map((claim) => claim.span.end + c.formula.by)).sort((a, b) => a - b);
   for (const { formula, claims: own } of claims) {
     if (own.length === 0) continue;
     const note = settingsAt(notes, formula.span.start);
@@ -93,14 +95,19 @@ function* checking(parts: CheckParts, budget: Budget): Generator<void, Checked> 
       const around: Place['around'] = { conditions: formula.formula.conditions, before, after };
       return (formula.by === 0 ? own : claimsIn(formula.formula, given)).flatMap((claim) => {
         const until = firstFrom(starts, claim.span.end);
-        const place: Place = { text: parts.text, formula, around, absent, ...(until === null ? {} : { until }) };
+        const since = lastUpTo(ends, claim.span.start);
+        const place: Place = { text: parts.text, formula, around, absent, ...(until === null ? {} : { until }), ...(since === null || since < start - REACH ? {} : { since }) };
         const local = withNote({ ...asked, budget: share(time) }, note, parts);
-        return withinTime(claim.span, () => checkClaim(claim, given, definitions, local, place));
+        if (claim.bare && !isSpokenOf(around)) return [];
+        const found = withinTime(claim.span, () => checkClaim(claim, given, definitions, local, place));
+        // Such a relation that is no expansion may be an equation that holds at one value.
+        return claim.bare && found[0]?.verdict !== 'holds' && found[0]?.start === claim.span.start ? [] : found;
       });
     };
     const next = firstFrom(starts, end);
+    const last = lastUpTo(ends, start);
     const key = (): string =>
-      signatureOf([request, note, parts.text.slice(start, end), formula.notation, formula.inline, formula.label, before, after, next === null || next > end + REACH ? null : next - start, definitionsUsed(own, definitions, parts.text, formula), macrosUsed(parts.text.slice(start, end), content.macros)]);
+      signatureOf([request, note, parts.text.slice(start, end), formula.notation, formula.inline, formula.label, before, after, next === null || next > end + REACH ? null : next - start, last === null || last < start - REACH ? null : start - last, definitionsUsed(own, definitions, parts.text, formula), macrosUsed(parts.text.slice(start, end), content.macros)]);
     findings.push(...remembered(parts.memory, key, start, budget, judgeAll));
     yield;
   }
@@ -128,6 +135,15 @@ function* checking(parts: CheckParts, budget: Budget): Generator<void, Checked> 
 
 /** Words by which comments promise an accuracy. */
 const PROMISING = /\berr(?:or)?s?\b|\baccura|\bprecis|\bwithin\b|\bgood\s+to\b|\bcorrect\s+to\b|\bdeviat|\beps(?:ilon)?\b|ε/i;
+
+const SPOKEN = /\bsmall\b|\btiny\b|\bwithin\b|\baccura|\berrors?\b|%|\bper\s?cent\b|\bprecision\b|\bcorrect to\b|\bparts? in\b|\bbetter than\b|\\ll(?![a-z])|≪|(?:\\to(?![a-z])|→)\s*0(?![.\d])|<|≤|\\leq?(?![a-z])|\b(?:near|around|about)\s+\$?(?:0|zero)\b/i;
+
+/** Words of smallness or accuracy, or an interval, stand in the sentence of the formula. */
+function isSpokenOf({ conditions, before, after }: Place['around']): boolean {
+  if (conditions.length > 0) return true;
+  const next = after.search(SENTENCE);
+  return SPOKEN.test(before.slice(lastSentence(before))) || SPOKEN.test(next < 0 ? after : after.slice(0, next));
+}
 
 /** Findings kept from an earlier check, else judged now and kept, unless time ran short. */
 function remembered(memory: CheckMemory | undefined, keyOf: () => string, start: number, budget: Budget, find: (time: Budget) => readonly Finding[]): readonly Finding[] {
@@ -159,6 +175,17 @@ function firstFrom(ascending: readonly number[], from: number): number | null {
     else high = middle;
   }
   return ascending[low] ?? null;
+}
+
+/** The last of ascending numbers that is at most `to`. */
+function lastUpTo(ascending: readonly number[], to: number): number | null {
+  let [low, high] = [0, ascending.length];
+  while (low < high) {
+    const middle = (low + high) >> 1;
+    if ((ascending[middle] ?? Infinity) <= to) low = middle + 1;
+    else high = middle;
+  }
+  return ascending[low - 1] ?? null;
 }
 
 /** The findings, or that there was no time for them. */

@@ -5,8 +5,9 @@ import { polynomialReport } from '../guard/index.ts';
 import type { Finding } from '../protocol.ts';
 import { type CommentText, documentOffset, type PolynomialCode, readExact, readFormula, type SeriesBranch } from '../read/index.ts';
 import { FLOAT_FORMATS, toPlain } from '../write/index.ts';
-import { decimalUp, intervalIn, intervalOf } from './accuracy.ts';
+import { decimalUp } from './accuracy.ts';
 import { enclose } from './enclose.ts';
+import { intervalIn, intervalOf } from './intervals.ts';
 import type { Asked } from './setting.ts';
 
 /** What reads polynomials and comments of a program. */

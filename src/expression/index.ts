@@ -3,7 +3,7 @@ export * from './expression.ts';
 export { markedName } from './derivativeMarks.ts';
 export { BOLD, isVectorName, setBold } from './vectorNames.ts';
 export { PLAIN_STYLE, type DocumentStyle, type OrderStyle } from './style.ts';
-export { literalRational, rationalOf } from './numbers.ts';
+export { joinRationals, literalRational, rationalOf } from './numbers.ts';
 export * as build from './build.ts';
 export * as Q from './rational.ts';
 export type { Rational } from './rational.ts';

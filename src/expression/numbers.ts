@@ -16,9 +16,9 @@ export function rationalOf(e: Expression, depth = 40): Q.Rational | null {
       return value && Q.negate(value);
     }
     case 'sum':
-      return fold(e.terms, Q.ZERO, Q.add, inner);
+      return joinRationals(e.terms, Q.ZERO, Q.add, inner);
     case 'product':
-      return fold(e.factors, Q.ONE, Q.multiply, inner);
+      return joinRationals(e.factors, Q.ONE, Q.multiply, inner);
     case 'quotient': {
       const numerator = inner(e.numerator);
       const denominator = inner(e.denominator);
@@ -35,7 +35,8 @@ export function rationalOf(e: Expression, depth = 40): Q.Rational | null {
   }
 }
 
-function fold(items: readonly Expression[], start: Q.Rational, step: (a: Q.Rational, b: Q.Rational) => Q.Rational, value: (e: Expression) => Q.Rational | null): Q.Rational | null {
+/** Rational values of all items, joined one after the other; null where an item has none. */
+export function joinRationals(items: readonly Expression[], start: Q.Rational, step: (a: Q.Rational, b: Q.Rational) => Q.Rational, value: (e: Expression) => Q.Rational | null): Q.Rational | null {
   let total = start;
   for (const item of items) {
     const next = value(item);

@@ -1,15 +1,5 @@
 /** Recognising exact values in expressions, as `value` rules need it: rationals, rational multiples of pi, square roots. */
-import { build, type Expression, Q, type Rational, rationalOf } from '../expression/index.ts';
-
-function fold(items: readonly Expression[], start: Rational, step: (a: Rational, b: Rational) => Rational, value: (e: Expression) => Rational | null): Rational | null {
-  let total = start;
-  for (const item of items) {
-    const next = value(item);
-    if (!next) return null;
-    total = step(total, next);
-  }
-  return total;
-}
+import { build, type Expression, joinRationals, Q, type Rational, rationalOf } from '../expression/index.ts';
 
 /** An integer of moderate size (|n| at most `limit`), as a JavaScript number. */
 export function asInteger(e: Expression, limit = 100000): number | null {
@@ -29,7 +19,7 @@ function multipleOf(e: Expression, isBase: (e: Expression) => boolean, depth = 4
       return inner && Q.negate(inner);
     }
     case 'sum':
-      return fold(e.terms, Q.ZERO, Q.add, (term) => multipleOf(term, isBase, depth - 1));
+      return joinRationals(e.terms, Q.ZERO, Q.add, (term) => multipleOf(term, isBase, depth - 1));
     case 'product': {
       let found: Rational | null = null;
       let scale = Q.ONE;
@@ -92,7 +82,7 @@ export function signedSquare(e: Expression, depth = 12): Rational | null {
       return inner && Q.negate(inner);
     }
     case 'product':
-      return fold(e.factors, Q.ONE, Q.multiply, (factor) => signedSquare(factor, depth - 1));
+      return joinRationals(e.factors, Q.ONE, Q.multiply, (factor) => signedSquare(factor, depth - 1));
     case 'quotient': {
       const numerator = signedSquare(e.numerator, depth - 1);
       const denominator = signedSquare(e.denominator, depth - 1);

@@ -129,7 +129,7 @@ function commentFormulas(text: string, region: Region): readonly Place[] {
 const RELATION = /~=|≈|∼|≃|(?<![<>=!:+\-*/])=(?!=)|\\approx|\\sim(?:eq)?(?![a-z])|(?<=\s)~(?=\s)/;
 
 /** Running text that goes on behind a formula. */
-const WORDS_AFTER = /\s(?:for|when|where|if|with|near|around|which|so|and|using|gives?|since|because|valid|while|within|accurate|correct|to avoid|to within|better than|on)\s/;
+const WORDS_AFTER = /\s(?:for|when|where|if|with|near|around|which|so|and|using|gives?|since|because|valid|while|within|accurate|correct|to avoid|to within|better than|on|is|has)\s/;
 
 /** In each line with a relation, the longest stretch that is a formula; lines that start with a relation or a sign go on with the one before. */
 function proseFormulas(text: string, from: number, to: number): readonly Place[] {
@@ -178,7 +178,7 @@ function formulaInLine(text: string, start: number, end: number): Place | null {
   const ends = words ? [start + relation.index + words.index, end] : [end];
   for (const to of ends) {
     for (const at of new Set(starts)) {
-      if (at >= relation.index) continue;
+      if (at >= relation.index || WORD_FIRST.test(line.slice(at, at + 16))) continue;
       const outcome = readFormula(text, notation, { start: start + at, end: to });
       if (outcome.ok && outcome.value.expression.kind === 'relation' && !isWordy(outcome.value.expression, text)) return { start: start + at, end: to, notation };
     }
@@ -186,8 +186,14 @@ function formulaInLine(text: string, start: number, end: number): Place | null {
   return null;
 }
 
+/** Words that lead to a formula and are none of its letters. */
+const WORD_FIRST = /^(?:of|the|errors?|by|to|in|we|use|as|with|for|that|formula)\s/i;
+
+/** Words about formulas: one of them suffices to tell running text. */
+const ENGLISH = /^(?:the|errors?|formula|approximations?|approximate|use|expansion|series|that|with|for|and|where|when)$/i;
+
 /** Words of running text that were read as symbols. */
 function isWordy(e: Expression, text: string): boolean {
   const words = [...walk(e)].filter((n) => (n.kind === 'symbol' || n.kind === 'apply') && /^[A-Za-z]{3,}$/.test(n.name) && n.span && /^[A-Za-z]{3,}$/.test(text.slice(n.span.start, n.span.start + n.name.length)));
-  return words.length > 1;
+  return words.length > 1 || words.some((n) => 'name' in n && ENGLISH.test(n.name));
 }

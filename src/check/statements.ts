@@ -74,15 +74,27 @@ export function statementAround(around: Surroundings): Statement | null {
       printed: text.slice(start, end),
       measure: size.measure === 'relative' || /\brelative\b/i.test(beside) ? 'relative' : 'absolute',
       interval: intervalNear(around.conditions, window.replaceAll(BLANK, ' '), around.variable, match.index + whole.length, around.small),
-      doubt: owner === 'own' ? null : owner,
+      doubt: owner === 'own' ? doubtIn(window.slice(0, match.index), window.slice(match.index)) : owner,
     };
   }
   return null;
 }
 
+/** The statement is denied, wished for or put as a condition rather than made. */
+const NOT_STATED = /\b(?:not|n't|no longer|never|cannot|hardly|barely|fails?|failed|insufficient\w*|needs?|needed|requires?|required|must|should|would|want\w*|wish\w*|desired|suffices?|if an?|unless|until|to (?:reach|achieve|obtain|get|keep|attain|bring))\b/i;
+const NOT_MORE = /\b(?:not|never|no|cannot|without|nowhere)\s+(?:\w+\s+)?(?:exceed\w*|more|larger|greater|bigger|above|worse)/gi;
+/** Another formula is spoken of: one with more terms, or one that is only referred to. */
+const OTHER_FORMULA = /\b(?:another|other|next|instead|higher|improved|more terms|adding|including|keeping|further|extra|additional)\b|\b(?:eqs?|equations?|formulas?|refs?|sections?|tables?)\b\.?[\s~]*(?:\(|\d|\\)|\\(?:eq)?ref\b|\\cite\b/i;
+
+function doubtIn(before: string, behind: string): string | null {
+  const words = `${before}${behind}`.replace(NOT_MORE, '');
+  if (NOT_STATED.test(words)) return 'Whether this sentence states the accuracy or denies or demands it is not plain.';
+  return OTHER_FORMULA.test(before.slice(lastSentence(before))) ? 'Whether the stated tolerance is about this formula is not plain.' : null;
+}
+
 /** `exceeds 1 %` states that the error is large. */
 function isUpperBound(gap: string): boolean {
-  const rest = gap.replace(/\b(?:not|never|no|cannot|without|nowhere)\s+(?:\w+\s+)?(?:exceed\w*|more|larger|greater|bigger|above|worse)/gi, '');
+  const rest = gap.replace(NOT_MORE, '');
   return !/\b(?:exceed\w*|above|at least|more than|greater|larger|bigger|over|worse|beyond|not)\b|>|\\g(?:e|t|eq|eqslant)\b|≥/i.test(rest);
 }
 

@@ -53,6 +53,8 @@ describe('a stated accuracy', () => {
     ['markdown', '$$\\sin\\theta \\approx \\theta$$\nto within 1 % for $\\theta < 0.3$.', '1 %'],
     ['python', '# With error below 1e-7 for |x| <= 0.3: cos(x) ~= 1 - x^2/2 + x^4/24\ny = 1\n', '1e-7'],
     ['python', '# cos(x) ~= 1 - x^2/2 + x^4/24 with error below 1e-7 for |x| <= 0.3\ny = 1\n', '1e-7'],
+    ['plain', 'For |x| < 0.5 the error of cos(x) ~= 1 - x^2/2 is below 1e-3', '1e-3'],
+    ['c', '// The approximation cos(x) ~= 1 - x^2/2 is accurate to 1e-3 for |x| < 0.5\nint y;\n', '1e-3'],
     ['c', '// sin(x) ~= x to within 1% for |x| < 0.3\nint y = 1;\n', '1%'],
   ])('is found in %s', (language, text, place) => {
     expect(judged(text, language)).toEqual([[place, 'fails']]);
@@ -69,10 +71,13 @@ describe('a stated accuracy', () => {
       expect(judged(text)).toEqual([]);
   });
 
-  it('that may belong to either of two formulas, or to something else, is undecided', () => {
+  it('that may belong to either of two formulas or to something else, or is not asserted, is undecided', () => {
     for (const text of [
       'With $\\sin x \\approx x - x^3/6$ and error below $10^{-9}$ for $|x| < 0.3$ and $\\cos x \\approx 1 - x^2/2$ we get this.',
       '$\\sin x \\approx x - x^3/6$ and $\\cos x \\approx 1 - x^2/2$ are accurate to $10^{-3}$ and $10^{-5}$, respectively, for $|x| < 0.4$.',
+      'The approximation $\\sin x \\approx x$ is not accurate to 1\\% for $|x| < 1$.',
+      'If an error below $10^{-6}$ for $|x|<0.5$ is needed, $\\cos x \\approx 1 - x^2/2$ does not suffice.',
+      'While $\\cos x \\approx 1 - x^2/2$ is crude, the next order gives an error below $10^{-4}$ for $|x| < 0.3$.',
       'Our instrument is accurate within 1\\% for $|x|<0.9$, so we use $\\cos x \\approx 1 - x^2/2$.',
     ])
       expect(judged(text).map(([, verdict]) => verdict)).toEqual(['undecided']);

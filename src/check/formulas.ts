@@ -195,5 +195,5 @@ const ENGLISH = /^(?:the|errors?|formula|approximations?|approximate|use|expansi
 /** Words of running text that were read as symbols. */
 function isWordy(e: Expression, text: string): boolean {
   const words = [...walk(e)].filter((n) => (n.kind === 'symbol' || n.kind === 'apply') && /^[A-Za-z]{3,}$/.test(n.name) && n.span && /^[A-Za-z]{3,}$/.test(text.slice(n.span.start, n.span.start + n.name.length)));
-  return words.length > 1 || words.some((n) => 'name' in n && ENGLISH.test(n.name));
+  return words.length > 1 || words.some((n) => (n.kind === 'symbol' || n.kind === 'apply') && ENGLISH.test(n.name));
 }

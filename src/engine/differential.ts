@@ -152,7 +152,7 @@ export function equationAnswer(request: ExpandRequest, source: SourceFormula, si
   const formula = source.formula ?? source.expression;
   const named = request.variable === undefined ? null : source.readSymbol(request.variable);
   const variable = question?.value.variable ?? (named?.ok ? named.value : undefined);
-  if (!variable || (!question && !isPlainEquation(request, formula, variable))) return null;
+  if (!variable || (!question && (source.unknown !== undefined || !isPlainEquation(request, formula, variable)))) return null;
   return inPlaceAnswer(request, formula, variable, size, time);
 }
 

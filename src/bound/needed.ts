@@ -4,6 +4,7 @@ import { type Expansion, prefix } from '../expand/index.ts';
 import { budget, type Budget, Declined, success } from '../outcome.ts';
 import { type Ball, encloseReal, real } from '../rigorous/index.ts';
 import { describe } from '../functions/index.ts';
+import { isOnePiece } from './exactSum.ts';
 import { fittedDegreeOf } from './fitted.ts';
 import { isPowerSum, sumOf } from './local.ts';
 import { ballNumbers } from './numbers.ts';
@@ -356,7 +357,7 @@ function atRadius(problem: NeededProblem, expansionOf: (n: number) => Expansion,
 
 /** For one sum: the largest proven distance from the point (1/|x| at infinity) within which the bound keeps the tolerance, on the sides that `sides` has (else those that the expansion serves); null where none was found. */
 export function reachWith(problem: Omit<NeededProblem, 'expansionWithTerms' | 'interval'>, expansion: Expansion, tolerance: Rational, sides?: ClosedInterval): { readonly distance: string; readonly size: Rational } | null {
-  if (expansion.exact && !expansion.left) return { distance: 'inf', size: Q.rational(10n ** 30n) };
+  if (expansion.exact && !expansion.left) return isOnePiece(expansion.function, variableName(expansion)) ? { distance: 'inf', size: Q.rational(10n ** 30n) } : null;
   const intervalOf = (distance: Rational): ClosedInterval => within(expansion, build.number(distance), sides);
   /** A value at an end refutes at little cost. */
   const refuted = (distance: Rational): boolean => {

@@ -4,6 +4,7 @@ import type { Expansion } from '../expand/index.ts';
 import { Declined } from '../outcome.ts';
 import { describe } from '../functions/index.ts';
 import { type Ball, enclose, type LogModel, logRange, type Model, real } from '../rigorous/index.ts';
+import { isExactOn } from './exactSum.ts';
 import { scaleOut } from './homogeneous.ts';
 import { denominatorOf, isPowerSum, type Local, localDomain, localModel, logModelOf, remainderAtPoint, sumOf } from './local.ts';
 import { ballNumbers, doubles, type Numbers, type ParameterBalls, withValues } from './numbers.ts';
@@ -42,7 +43,13 @@ const limitOf = <T>(r: Numbers<T>['r'], lower: T, problem: SharpProblem): T => r
 
 export function bound(problem: SharpProblem, cache: ModelCache = new Map(), lengthHint = 0): RemainderBound {
   const { expansion, assumptions, budget } = problem;
-  if (expansion.exact && !expansion.left) return { value: '0', lower: '0', upperRational: Q.ZERO, lowerRational: Q.ZERO, method: 'the sum is the function', proof: ['The sum equals the function on the whole side.'] };
+  if (expansion.exact && !expansion.left) {
+    const name = variableName(expansion);
+    if (!isExactOn(expansion, problem.interval, name, parameterBalls(freeSymbols(expansion.function).filter((symbol) => symbol !== name), assumptions))) {
+      throw new Declined('undecided', 'The sum equals the function near the point; that it does so on the whole interval could not be proved. Choose a smaller interval.');
+    }
+    return { value: '0', lower: '0', upperRational: Q.ZERO, lowerRational: Q.ZERO, method: 'the sum is the function', proof: ['The sum equals the function on the whole interval.'] };
+  }
   const variable = variableName(expansion);
   const names = freeSymbols(expansion.function).filter((name) => name !== variable);
   const parameters = parameterBalls(names, assumptions);

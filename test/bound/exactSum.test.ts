@@ -1,0 +1,23 @@
+/** Sums that are exact near the point: where they are exact on the interval too, and where that is not taken for granted. Values by hand. */
+import { describe, expect, it } from 'vitest';
+import { ask } from '../fit/engine.ts';
+
+const bounded = (text: string, point: string, interval: readonly [string, string]): ReturnType<typeof ask> => ask({ ask: 'expand', language: 'latex', text, variable: 'x', point, interval });
+
+describe('exact sums', () => {
+  it.each([
+    ['x^2+1', '0', ['0', '3']],
+    ['\\frac{1}{x} + x', '0', ['1', '3']],
+    ['\\arcsin(\\sin x)', '0', ['-1', '1']],
+    ['\\ln(e^x)', '0', ['0', '3']],
+    ['\\sqrt{x}', '0', ['0', '2']],
+    ['\\sqrt{x^2-2x+1}', '3', ['2', '4']],
+  ] as const)('%s at %s is exact on %j', async (text, point, interval) => expect(await bounded(text, point, interval)).toMatchObject({ ok: true, bound: { value: '0' } }));
+  it.each([
+    ['|x-1|', '3', ['0', '4']],
+    ['\\sqrt{x^2-2x+1}', '3', ['0', '4']],
+    ['\\arcsin(\\sin x)', '0', ['0', '3']],
+    ['\\arctan(\\tan 3x)', '\\frac{23}{8}', ['35/16', '53/16']],
+    ['|x-1|', '3', ['2', 'inf']],
+  ] as const)('%s at %s is not claimed to be exact on %j', async (text, point, interval) => expect(await bounded(text, point, interval)).toMatchObject({ ok: false, error: { code: 'undecided' } }));
+});

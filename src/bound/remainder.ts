@@ -45,6 +45,8 @@ export function bound(problem: SharpProblem, cache: ModelCache = new Map(), leng
   const { expansion, assumptions, budget } = problem;
   if (expansion.exact && !expansion.left) {
     const name = variableName(expansion);
+    // Refuses an interval on a side that is not served, or with its ends the wrong way round.
+    segmentsOf(expansion, problem.interval, assumptions);
     if (!isExactOn(expansion, problem.interval, name, parameterBalls(freeSymbols(expansion.function).filter((symbol) => symbol !== name), assumptions))) {
       throw new Declined('undecided', 'The sum equals the function near the point; that it does so on the whole interval could not be proved. Choose a smaller interval.');
     }

@@ -20,4 +20,9 @@ describe('exact sums', () => {
     ['\\arctan(\\tan 3x)', '\\frac{23}{8}', ['35/16', '53/16']],
     ['|x-1|', '3', ['2', 'inf']],
   ] as const)('%s at %s is not claimed to be exact on %j', async (text, point, interval) => expect(await bounded(text, point, interval)).toMatchObject({ ok: false, error: { code: 'undecided' } }));
+  it.each([
+    ['\\sqrt{x}', ['-1', '1']],
+    ['\\ln x', ['-2', '-1']],
+    ['\\frac{1}{x}', ['1', '-1']],
+  ] as const)('%s at 0 has no bound on %j', async (text, interval) => expect(await bounded(text, '0', interval)).toMatchObject({ ok: false, error: { code: 'bad-request' } }));
 });

@@ -60,7 +60,7 @@ describe('identities between enclosures', () => {
     if (!a || !b) return;
     expect(real.overlaps(a, b)).toBe(true);
     expect(real.relativeAccuracy(a)).toBeGreaterThan(100);
-  }, 60_000);
+  });
 });
 
 /** The series of a form, by its place, as rational coefficients. */

@@ -1,7 +1,10 @@
 /** Named constants as real balls, cached by precision. */
+import { pi } from './ball-circular.ts';
+import { exp, log, logTwo } from './ball-exponential.ts';
+import { add, divide, multiply, powerInteger, subtract } from './ball-operations.ts';
+import { sqrt } from './ball-powers.ts';
+import { fromInteger, fromRational, ONE, round, rounded, scaleByPowerOfTwo, withRadius, ZERO } from './ball.ts';
 import type { Ball } from './ball.types.ts';
-import { add, divide, fromInteger, fromRational, multiply, ONE, powerInteger, round, rounded, scaleByPowerOfTwo, subtract, withRadius, ZERO } from './ball.ts';
-import { exp, log, logTwo, pi, sqrt } from './ball-functions.ts';
 
 function cached(compute: (precision: number) => Ball): (precision: number) => Ball {
   let have = 0;

@@ -1,3 +1,5 @@
 /** Everything on double intervals under one name: `interval.exp(x)`. */
 export * from './interval.ts';
-export { acos, acosh, asin, asinh, atan, atan2, atanh, cos, cosh, exp, expm1, log, log1p, LOG_TWO, PI, power, powerRational, root, sin, sinCos, sinh, tan, tanh } from './interval-functions.ts';
+export { acos, asin, atan, atan2, cos, PI, sin, sinCos, tan } from './interval-circular.ts';
+export { acosh, asinh, atanh, cosh, sinh, tanh } from './interval-hyperbolic.ts';
+export { exp, expm1, log, log1p, LOG_TWO, power, powerRational, root } from './interval-exponential.ts';

@@ -1,8 +1,7 @@
 /** Double intervals as an arithmetic. */
 import type { FiniteConstant, RealArithmetic } from './arithmetic.ts';
 import type { Interval } from './ball.types.ts';
-import * as interval from './interval.ts';
-import * as f from './interval-functions.ts';
+import * as interval from './doubles.ts';
 import * as real from './real.ts';
 
 const constants = new Map<FiniteConstant, Interval>();
@@ -31,8 +30,8 @@ export const intervalArithmetic: RealArithmetic<Interval> = {
   divide: interval.divide,
   divideInteger: (a, n) => interval.divide(a, interval.fromInteger(n)) ?? interval.WHOLE,
   powerInteger: interval.powerInteger,
-  powerRational: f.powerRational,
-  power: f.power,
+  powerRational: interval.powerRational,
+  power: interval.power,
   containsZero: interval.containsZero,
   isZero: interval.isZero,
   union: interval.union,
@@ -40,9 +39,9 @@ export const intervalArithmetic: RealArithmetic<Interval> = {
   midpoint: (x) => interval.fromDouble(interval.midpoint(x)),
   isPoint: interval.isPoint,
   absolute: interval.absolute,
-  root: f.root,
-  sinCos: f.sinCos,
-  atan2: f.atan2,
+  root: interval.root,
+  sinCos: interval.sinCos,
+  atan2: interval.atan2,
   maximum: interval.maximum,
   minimum: interval.minimum,
   isPositive: interval.isPositive,
@@ -52,21 +51,21 @@ export const intervalArithmetic: RealArithmetic<Interval> = {
   upperEnd: (x) => interval.fromDouble(x.hi),
   floor: (x) => (interval.isFinite(x) && Math.floor(x.lo) === Math.floor(x.hi) ? BigInt(Math.floor(x.lo)) : null),
   toDouble: interval.midpoint,
-  exp: (x) => finite(f.exp(x)),
-  expm1: (x) => finite(f.expm1(x)),
-  log: (x) => finite(f.log(x)),
-  log1p: (x) => finite(f.log1p(x)),
+  exp: (x) => finite(interval.exp(x)),
+  expm1: (x) => finite(interval.expm1(x)),
+  log: (x) => finite(interval.log(x)),
+  log1p: (x) => finite(interval.log1p(x)),
   sqrt: interval.sqrt,
-  sin: f.sin,
-  cos: f.cos,
-  tan: (x) => finite(f.tan(x)),
-  sinh: (x) => finite(f.sinh(x)),
-  cosh: (x) => finite(f.cosh(x)),
-  tanh: f.tanh,
-  asin: f.asin,
-  acos: f.acos,
-  atan: f.atan,
-  asinh: f.asinh,
-  acosh: f.acosh,
-  atanh: f.atanh,
+  sin: interval.sin,
+  cos: interval.cos,
+  tan: (x) => finite(interval.tan(x)),
+  sinh: (x) => finite(interval.sinh(x)),
+  cosh: (x) => finite(interval.cosh(x)),
+  tanh: interval.tanh,
+  asin: interval.asin,
+  acos: interval.acos,
+  atan: interval.atan,
+  asinh: interval.asinh,
+  acosh: interval.acosh,
+  atanh: interval.atanh,
 };

@@ -4,9 +4,9 @@
  * An infinite end means "no bound known on this side"; it is never a value. NaN never leaves this file.
  */
 import type { Rational } from '../expression/index.ts';
+import * as ball from './ball.ts';
 import type { Ball, Interval } from './ball.types.ts';
 import { bitLength, magnitude } from './bits.ts';
-import * as ball from './ball.ts';
 
 const PHI = 2 ** -53 * (1 + 2 ** -52);
 const ETA = 2 ** -1074;

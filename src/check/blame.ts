@@ -49,6 +49,13 @@ function isOneTermAway({ truncated, setting, truth, relation }: Accused, size: S
   return judge(truth, replaceNode(truncated.side, printed.node, termTree(expansion, right)), relation, setting).kind === 'holds';
 }
 
+/** The one change that makes the whole claim true; null where there is none. */
+export function repairOf(accused: Accused): Blame | null {
+  const { difference } = accused.failure;
+  const repair = difference && firstRepair(accused, difference, truthAround(accused, difference.size));
+  return repair?.whole ? repaired(accused, repair) : null;
+}
+
 export function blame(accused: Accused): Blame {
   const { truncated, failure } = accused;
   const whole = truncated.side.span ?? { start: 0, end: accused.text.length };

@@ -96,11 +96,17 @@ function numberEdits(here: readonly PrintedTerm[], truncated: Truncated, differe
     out.push(...factorialEdits(term, truncated, target, found.size, usesFactorials ? 0.5 : 1.2, setting));
     for (const literal of literalsOf(term.value, setting)) {
       if (!literal.span || !Q.isInteger(literal.value)) continue;
-      const valueWith = (m: bigint): number | null => {
-        const changed = leading(setting, replaceNode(term.value, literal, build.number(m)));
-        return changed.kind === 'monomial' && compareSizes(changed.size, found.size) === 0 ? sample(changed.coefficient) : null;
-      };
-      for (const m of candidates(literal.value.num, target, valueWith)) {
+      // A number under a sum that was opened stands in several terms of this order: (x^2 + y^2)/2.
+      const sharing = here.filter((t) => contains(t.value, literal));
+      const valueWith = (m: bigint): number | null =>
+        sharing.reduce<number | null>((sum, t) => {
+          const changed = leading(setting, replaceNode(t.value, literal, build.number(m)));
+          const value = changed.kind === 'monomial' && compareSizes(changed.size, found.size) === 0 ? sample(changed.coefficient) : null;
+          return sum === null || value === null ? null : sum + value;
+        }, 0);
+      const together = sharing.length > 1 ? valueWith(literal.value.num) : printed;
+      if (together === null) continue;
+      for (const m of candidates(literal.value.num, together + delta, valueWith)) {
         const inTerm = contains(term.node, literal);
         const distance = Math.abs(Math.log(Number(m) / Math.max(1, Number(literal.value.num))));
         out.push({ side: replaceNode(truncated.side, literal, build.number(m)), place: literal.span, text: `${m}`, kind: 'number', cost: (inTerm ? 1 : 4) + distance / 100 });

@@ -3,7 +3,7 @@ import { build, dependsOn, freeSymbols, mapChildren, Q, walk, type Expression, t
 import type { Finding } from '../protocol.ts';
 import { toPlain } from '../write/index.ts';
 import { judgeAccuracy } from './accuracy.ts';
-import { type Accused, blame, isOneChangeAway } from './blame.ts';
+import { type Accused, blame, isOneChangeAway, repairOf } from './blame.ts';
 import { type Claim, isTranscendental } from './claims.ts';
 import { regionBeside, regionError } from './convergence.ts';
 import type { PlacedFormula } from './formulas.ts';
@@ -11,7 +11,8 @@ import { halfUnit } from './decimals.ts';
 import { explicitPart, type General, generalIn, judgeGeneral } from './generalClaims.ts';
 import { type Hint, judge, type Judgement } from './judge.ts';
 import { calibrated } from './calibrate.ts';
-import { isGridName, normalise } from './normalise.ts';
+import { jointly } from './joint.ts';
+import { isGridName, normalise, valuesAsQuantities } from './normalise.ts';
 import { notationOf, writeIn } from './notation.ts';
 import type { Setting } from './context.ts';
 import { compare, compareSizes, leading } from './size.ts';
@@ -48,7 +49,9 @@ interface Tried {
  * The finding for one claim with its function known; null where it turns out not to be a claim (an identity, an equation to solve).
  * `lenient`: the function is only presumed, so that nothing fails.
  */
-export function findingOf(printed: Claim, given: Expression, asked: Asked, place: Place, options: FindingOptions = {}): readonly Finding[] {
+export function findingOf(claim: Claim, exact: Expression, asked: Asked, place: Place, options: FindingOptions = {}): readonly Finding[] {
+  const { f: given, side } = asked.variable ? { f: exact, side: claim.side } : valuesAsQuantities(exact, claim.side);
+  const printed = side === claim.side ? claim : { ...claim, side };
   const main = mainFinding(printed, given, asked, place, options);
   if (!main) return options.lenient === undefined ? fittedFinding(printed, given, asked, place) : [];
   const region = main.setting && main.finding.verdict === 'holds' && options.lenient === undefined ? regionFinding(printed, given, main.setting, place) : null;
@@ -89,6 +92,7 @@ function mainFinding(printed: Claim, given: Expression, asked: Asked, place: Pla
   if (choices.length === 0) return all.length > 0 && hasMarks(printed.side) ? only(undecided(printed, place, `The function does not hold ${all[0]?.setting.variable ?? 'the variable'}, in which the printed side runs.`)) : null;
   if (isPlainEquation(printed) && choices.some((c) => unknownSymbols(given, printed.side, c.setting).length > 0)) return null;
   const tried: Tried[] = [];
+  let chance: (Tried & { readonly finding: () => Finding | null; readonly side: Expression }) | null = null;
   for (const choice of choices) {
     const { f, claim } = reduced(given, printed, choice.setting);
     const general = generalIn(f, claim.side, choice.setting);
@@ -101,7 +105,11 @@ function mainFinding(printed: Claim, given: Expression, asked: Asked, place: Pla
     if (judgement.kind === 'identity') return null;
     if (judgement.kind === 'holds' && !isByChance(judgement, tried, choice)) return settled(holding(claim, f, choice.setting, judgement, place, options.lenient), choice.setting, claim.side);
     if (judgement.kind !== 'holds') tried.push({ choice, judgement });
+    else chance ??= { choice, judgement, finding: () => holding(claim, f, choice.setting, judgement, place, options.lenient), side: claim.side };
   }
+  const together = jointFinding(given, printed, choices, asked, place, options);
+  if (together) return only(together);
+  if (chance && !tried.some((t) => t.judgement.kind === 'fails' && t.judgement.failure.matched > 0)) return settled(chance.finding(), chance.choice.setting, chance.side);
   // A guess that fails counts only if no likelier guess is open, and if the terms show that it is the right one.
   const open = tried.findIndex((t) => t.judgement.kind === 'undecided');
   const firm = tried.findIndex((t) => t.judgement.kind === 'fails' && (t.choice.certain || t.judgement.failure.matched > 0 || (open >= 0 && isNearlyTrue(given, printed, t, place))));
@@ -132,6 +140,23 @@ function mainFinding(printed: Claim, given: Expression, asked: Asked, place: Pla
   }
   if (options.lenient !== undefined) return only(undecided(claim, place, `Taken as ${options.lenient} the claim does not hold; its definition does not stand in this document.`));
   return settled(failing(claim, f, best.choice.setting, best.judgement, place), best.choice.setting, claim.side);
+}
+
+/** The claim as one in several quantities that are small together; null where it is none, or is not plainly meant so. */
+function jointFinding(given: Expression, printed: Claim, choices: readonly Choice[], asked: Asked, place: Place, options: FindingOptions): Finding | null {
+  const [choice] = choices;
+  if (!choice || asked.variable || asked.point || choices.some((c) => c.certain) || options.lenient !== undefined) return null;
+  let repaired: Finding | null = null;
+  for (const joint of jointly(given, printed, choice)) {
+    const { setting } = joint.choice;
+    const { f, claim } = prepared(joint.f, joint.claim, setting);
+    const judgement = judge(f, claim.side, claim.relation, setting);
+    if (judgement.kind === 'holds' && !isByChance(judgement, [], joint.choice)) return holding(claim, f, setting, judgement, place, undefined);
+    if (judgement.kind !== 'fails' || judgement.failure.matched === 0) continue;
+    const repair = repairOf(accusedOf(claim, f, setting, judgement, place));
+    if (repair) repaired ??= { start: repair.place.start, end: repair.place.end, claim: claim.span, verdict: 'fails', severity: 'error', reason: repair.message, found: repair.found, fix: repair.fix, ...labelOf(place) };
+  }
+  return repaired;
 }
 
 const NO_INTERVAL = 'The stated accuracy is not judged, since no interval is named beside it.';
@@ -303,7 +328,8 @@ const mentionsFunction = (e: Expression): boolean => [...walk(e)].some((n) => n.
 /** Elsewhere than where its first terms are right, the claim says nothing: every printed term vanishes in the remainder, or all are of one size. */
 function isByChance({ hint, truncated }: Extract<Judgement, { kind: 'holds' }>, tried: readonly Tried[], { certain, setting }: Choice): boolean {
   if (certain) return false;
-  if (hint?.kind === 'absorbed') return tried.some((t) => t.judgement.kind === 'fails' && t.judgement.failure.matched > 0);
+  // Where even the first printed term vanishes in the remainder, the point is another one, if any other serves.
+  if (hint?.kind === 'absorbed') return hint.term === truncated.terms[0] || tried.some((t) => t.judgement.kind === 'fails' && t.judgement.failure.matched > 0);
   if (truncated.mark === 'O' || truncated.mark === 'o' || truncated.terms.length < 2) return false;
   const sizes = truncated.terms.map((t) => leading(setting, t.value));
   const [first] = sizes;
@@ -334,7 +360,15 @@ function isHeldAgainst(claim: Claim, f: Expression, best: Tried, several: boolea
   if (marked) return certain || failure.matched > 0 || !several || (count > 1 && isTranscendental(f, best.choice.setting.variable));
   if (!isTranscendental(f, best.choice.setting.variable)) return false;
   if (claim.relation === '=') return (count >= 2 && failure.matched >= 1) || (count >= 3 && oneChange());
-  return failure.matched >= 1 || (certain && failure.difference !== null) || (count >= 2 && oneChange()) || best === offByConstant;
+  return failure.matched >= 1 || (certain && failure.difference !== null) || ((count >= 2 || isPlainPower(f, best)) && oneChange()) || best === offByConstant;
+}
+
+/** One printed term, a fraction times the very power with which the function begins: no fit and no solution of an equation looks like this. */
+function isPlainPower(f: Expression, { choice, judgement }: Tried): boolean {
+  if (judgement.kind !== 'fails' || judgement.truncated.terms.length !== 1 || hasDecimals(judgement.truncated.side)) return false;
+  const [own, printed] = [leading(choice.setting, f), leading(choice.setting, judgement.truncated.side)];
+  if (own.kind !== 'monomial' || printed.kind !== 'monomial' || Q.isZero(own.size.power)) return false;
+  return compareSizes(own.size, printed.size) === 0 && freeSymbols(own.coefficient).length === 0 && freeSymbols(printed.coefficient).length === 0 && ![...walk(printed.coefficient)].some((n) => n.kind === 'constant');
 }
 
 /** The two sides are of one size on a scale of their own (exponentials, n^n), so that only a constant is wrong. */

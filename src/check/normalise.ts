@@ -1,5 +1,5 @@
 /** Short writings of the trade written out before a claim is judged: u for u(x) beside u(x + h), grid values y_{i+1}, real parts. */
-import { build, dependsOn, mapChildren, substitute, walk, type Expression } from '../expression/index.ts';
+import { build, dependsOn, mapChildren, sameExpression, substitute, walk, type Expression } from '../expression/index.ts';
 import { fold } from './fold.ts';
 
 /** Both sides with short writings written out. */
@@ -27,6 +27,24 @@ export function normalise(f: Expression, side: Expression, variable: string | nu
     return mapChildren(e, turn);
   };
   return { f: turn(f), side: turn(side) };
+}
+
+/** Functions of which only one value occurs, theta(t) in sin theta(t), as quantities of their own; their argument must stand nowhere else. Places are kept. */
+export function valuesAsQuantities(f: Expression, side: Expression): { readonly f: Expression; readonly side: Expression } {
+  const applied = [...walk(f), ...walk(side)].filter((n) => n.kind === 'apply');
+  const names = [...new Set(applied.map((n) => n.name))].filter((name) => {
+    const [first, ...more] = applied.filter((n) => n.name === name);
+    return first?.args.length === 1 && first.args[0]?.kind === 'symbol' && first.derivatives.every((d) => d === 0) && more.every((n) => sameExpression(n, first));
+  });
+  if (names.length === 0 || names.length < new Set(applied.map((n) => n.name)).size) return { f, side };
+  const turn = (e: Expression): Expression => {
+    const value = (e.kind === 'apply' || e.kind === 'symbol') && names.includes(e.name) ? applied.find((n) => n.name === e.name) : undefined;
+    const [argument] = value?.args ?? [];
+    return argument?.kind === 'symbol' ? { ...build.symbol(`${e.kind === 'apply' || e.kind === 'symbol' ? e.name : ''}(${argument.name})`), ...(e.span ? { span: e.span } : {}) } : mapChildren(e, turn);
+  };
+  const [left, right] = [turn(f), turn(side)];
+  const loose = applied.some((n) => n.args.some((a) => a.kind === 'symbol' && (dependsOn(left, a.name) || dependsOn(right, a.name))));
+  return loose || left.kind === 'symbol' ? { f, side } : { f: left, side: right };
 }
 
 /** u(x + h), u(x - h): the argument at h = 0, for functions whose argument moves with the variable. */

@@ -1,5 +1,5 @@
 /** In which quantity, and at which point, a claim is an expansion: from the request, from marks and words around, else from its own powers. */
-import { type Assumption, build, children, dependsOn, type Expression, freeSymbols, literalRational, Q, sameExpression, walk } from '../expression/index.ts';
+import { type Assumption, build, children, dependsOn, type Expression, freeSymbols, literalRational, Q, sameExpression, type SumNode, walk } from '../expression/index.ts';
 import type { Budget } from '../outcome.ts';
 import { candidates } from '../read/index.ts';
 import type { Setting } from './context.ts';
@@ -122,6 +122,8 @@ function pointsFor(side: Expression, name: string): readonly (Expression | 'inf'
   const kept = withoutMarks(side);
   const shift = shiftIn(kept, name);
   if (shift) return [shift];
+  const zero = commonZero(kept, name);
+  if (zero) return [zero, 'inf', ZERO];
   const terms = kept.kind === 'sum' ? kept.terms : kept.kind === 'product' ? (kept.factors.find((factor) => factor.kind === 'sum' && dependsOn(factor, name)) ?? kept).kind === 'sum' ? sumTerms(kept.factors.find((factor) => factor.kind === 'sum' && dependsOn(factor, name))) : [kept] : [kept];
   const exponents = terms.map((t) => exponentOf(t, name)).filter((e) => e !== null);
   const [first] = exponents;
@@ -162,16 +164,10 @@ function shiftIn(e: Expression, name: string): Expression | null {
   const shifts: Expression[] = [];
   let loose = false;
   const visit = (node: Expression): void => {
-    if (node.kind === 'sum' && node.terms.length === 2 && node !== e) {
-      const [a, b] = node.terms;
-      if (a?.kind === 'symbol' && a.name === name && b && !dependsOn(b, name)) {
-        shifts.push(b.kind === 'negation' ? b.operand : build.negation(b));
-        return;
-      }
-      if (a && b?.kind === 'negation' && b.operand.kind === 'symbol' && b.operand.name === name && !dependsOn(a, name)) {
-        shifts.push(a);
-        return;
-      }
+    const zero = node.kind === 'sum' && node !== e ? twoTermZero(node, name) : null;
+    if (zero) {
+      shifts.push(zero);
+      return;
     }
     if (node.kind === 'symbol' && node.name === name) loose = true;
     else for (const child of [...childrenOf(node)]) visit(child);
@@ -179,6 +175,40 @@ function shiftIn(e: Expression, name: string): Expression | null {
   visit(e);
   const [first] = shifts;
   return first && !loose ? first : null;
+}
+/** The a of x - a, x + b or a - x. */
+function twoTermZero({ terms }: SumNode, name: string): Expression | null {
+  const [a, b] = terms;
+  if (!a || !b || terms.length !== 2) return null;
+  if (a.kind === 'symbol' && a.name === name && !dependsOn(b, name)) return b.kind === 'negation' ? b.operand : build.negation(b);
+  return b.kind === 'negation' && b.operand.kind === 'symbol' && b.operand.name === name && !dependsOn(a, name) ? a : null;
+}
+
+/** The a where x - a is a factor of what every term that moves is a power of: ((x - 1)/(x + 1))^3. */
+function commonZero(e: Expression, name: string): Expression | null {
+  const zerosOf = (node: Expression): readonly Expression[] => {
+    switch (node.kind) {
+      case 'sum': {
+        const own = twoTermZero(node, name);
+        if (own) return [own];
+        const moving = node.terms.filter((t) => dependsOn(t, name)).map(zerosOf);
+        return moving[0]?.filter((a) => moving.every((others) => others.some((b) => sameExpression(a, b)))) ?? [];
+      }
+      case 'product':
+        return node.factors.flatMap(zerosOf);
+      case 'quotient':
+        return zerosOf(node.numerator);
+      case 'negation':
+        return zerosOf(node.operand);
+      case 'power': {
+        const exponent = literalRational(node.exponent);
+        return exponent && Q.signOf(exponent) > 0 ? zerosOf(node.base) : [];
+      }
+      default:
+        return [];
+    }
+  };
+  return zerosOf(e)[0] ?? null;
 }
 const childrenOf = (node: Expression): readonly Expression[] => {
   switch (node.kind) {

@@ -103,7 +103,7 @@ export function gatherFacts(tokens: readonly Token[], match: Int32Array): NameFa
           break;
         }
       }
-    } else if (!primes) bare.add(full);
+    } else if (!primes && !raisedBeforeArgument(tokens, match, k)) bare.add(full);
     const before = token(i - 1);
     if (before?.kind === 'command' && before.text === 'partial' && !is(i + 1, '^')) {
       // `\partial E_n` in a numerator: E_n is differentiated. Denominators hold variables.
@@ -124,7 +124,7 @@ export function gatherFacts(tokens: readonly Token[], match: Int32Array): NameFa
       } else if (token(i + 1)?.kind === 'super') {
         sawEPower = true;
         if (!/^[24]$/.test(token(i + 1)?.text ?? '')) plainSquareOnly = false;
-      } else if ((is(i - 1, '/') && !bracket) || (token(i - 1)?.kind === 'open' && token(i + 1)?.kind === 'close' && token(i - 2)?.kind === 'close')) eulerByUse = true;
+      } else if ((is(i - 1, '/') && !bracket) || (token(i - 1)?.kind === 'open' && token(i + 1)?.kind === 'close' && token(i - 2)?.kind === 'close') || underBar(tokens, i)) eulerByUse = true;
       else bareE = true;
     }
     if (name === 'i' && !subscripted) {
@@ -138,6 +138,21 @@ export function gatherFacts(tokens: readonly Token[], match: Int32Array): NameFa
   const truncated = tokens.some((t, i) => (t.kind === 'command' && /^(?:[cl]?dots.?|approx|sim|simeq|mathcal|order)$/.test(t.text)) || t.text === '...' || (/^[Oo]$/.test(t.text) && tokens[i + 1]?.text === '('));
   const infix = tokens.some((t) => t.kind === 'command' && (t.text === 'over' || t.text === 'choose'));
   return { infix, surelyFunctions, differentiated, truncated, bare, alone, eulerNumber, imaginary: jInExponent ? 'j' : iBound || (iIndex && !iInExponent) ? null : 'i', dotProducts, indices };
+}
+
+/** `^2(t)`: a power of the value of a function, where its argument is one letter. */
+function raisedBeforeArgument(tokens: readonly Token[], match: Int32Array, at: number): boolean {
+  if (tokens[at]?.text !== '^' || tokens[at]?.kind !== 'mark') return false;
+  const first = tokens[at + 1];
+  const after = first?.kind === 'open' ? (match[at + 1] ?? -1) + 1 : at + 2;
+  return tokens[after]?.text === '(' && match[after] === after + 2 && isName(tokens[after + 1]);
+}
+
+/** The token alone is the denominator of a fraction whose numerator is one token: `\frac ne`, `\frac1{e}`. */
+function underBar(tokens: readonly Token[], at: number): boolean {
+  const braced = tokens[at - 1]?.kind === 'open' && tokens[at + 1]?.kind === 'close';
+  const bar = tokens[at - (braced ? 3 : 2)];
+  return bar?.kind === 'command' && /^[dtc]?frac$/.test(bar.text);
 }
 
 function exponentText(tokens: readonly Token[], match: Int32Array, at: number): string {

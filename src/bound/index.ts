@@ -30,6 +30,7 @@ export const reachFor = (
 
 /** f, sum, f - sum and the percentage at an exact argument, each enclosed to about 10 digits. */
 export const valueAt = (expansion: Expansion, argument: Expression, assumptions: readonly Assumption[], budget: Budget): Outcome<ValueAt> => attempt(() => valueAtArgument(expansion, argument, assumptions, budget));
+export { isExactOnSide } from './exactSide.ts';
 export { boundDifference, type DifferenceBound, type DifferenceProblem, polynomialOf } from './difference.ts';
 
 /** The value of an expression that holds definite integrals, enclosed to an absolute tolerance; singular and infinite ends included. Fails with bad-request where the integral diverges, undecided where it could not be enclosed. */

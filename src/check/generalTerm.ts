@@ -4,15 +4,10 @@
  * Two power series with the same first terms that satisfy it are equal, since D has no zero at later indices (Stanley 1980, from memory: D-finite series).
  */
 import { createField } from '../algebra/index.ts';
-import { build, dependsOn, type Expression, literalRational, Q, type Rational, substitute } from '../expression/index.ts';
+import { build, dependsOn, type Expression, type Linear, linearIn, literalRational, Q, type Rational, substitute } from '../expression/index.ts';
 import type { Setting } from './context.ts';
 import { differentiate } from '../functions/index.ts';
 
-/** slope * k + shift. */
-interface Linear {
-  readonly slope: Rational;
-  readonly shift: Rational;
-}
 /** c(k+1)/c(k) = factor * product of above / product of below, each linear in k. */
 interface Ratio {
   readonly factor: Expression;
@@ -21,42 +16,6 @@ interface Ratio {
 }
 
 const ONE: Ratio = { factor: build.number(1), above: [], below: [] };
-
-/** e as slope * k + shift with rational numbers; null otherwise. */
-export function linearIn(e: Expression, index: string): Linear | null {
-  switch (e.kind) {
-    case 'symbol':
-      return e.name === index ? { slope: Q.ONE, shift: Q.ZERO } : null;
-    case 'number':
-      return { slope: Q.ZERO, shift: e.value };
-    case 'negation': {
-      const inner = linearIn(e.operand, index);
-      return inner && { slope: Q.negate(inner.slope), shift: Q.negate(inner.shift) };
-    }
-    case 'sum': {
-      const parts = e.terms.map((t) => linearIn(t, index));
-      const known = parts.filter((p) => p !== null);
-      return known.length === parts.length ? known.reduce((a, b) => ({ slope: Q.add(a.slope, b.slope), shift: Q.add(a.shift, b.shift) })) : null;
-    }
-    case 'product': {
-      let result: Linear = { slope: Q.ZERO, shift: Q.ONE };
-      for (const f of e.factors) {
-        const inner = linearIn(f, index);
-        if (!inner || (!Q.isZero(inner.slope) && !Q.isZero(result.slope))) return null;
-        result = Q.isZero(inner.slope)
-          ? { slope: Q.multiply(result.slope, inner.shift), shift: Q.multiply(result.shift, inner.shift) }
-          : { slope: Q.multiply(inner.slope, result.shift), shift: Q.multiply(inner.shift, result.shift) };
-      }
-      return result;
-    }
-    case 'quotient': {
-      const [above, below] = [linearIn(e.numerator, index), literalRational(e.denominator)];
-      return above && below && !Q.isZero(below) ? { slope: Q.divide(above.slope, below), shift: Q.divide(above.shift, below) } : null;
-    }
-    default:
-      return null;
-  }
-}
 
 const multiply = (a: Ratio, b: Ratio): Ratio => ({ factor: build.product(a.factor, b.factor), above: [...a.above, ...b.above], below: [...a.below, ...b.below] });
 const invert = (a: Ratio): Ratio => ({ factor: build.quotient(build.number(1), a.factor), above: a.below, below: a.above });

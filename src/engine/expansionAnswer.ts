@@ -1,4 +1,5 @@
 /** An Expansion as the protocol's answer fields. */
+import { isExactOnSide } from '../bound/index.ts';
 import { build, type Expression } from '../expression/index.ts';
 import type { Expansion, ExpansionTerm } from '../expand/expansion.ts';
 import type { ExpandAnswer, RemainderAnswer, TermAnswer } from '../protocol.ts';
@@ -17,14 +18,18 @@ function remainderAnswer(expansion: Expansion): RemainderAnswer | null {
   return { latex: remainderLatex(expansion), power: remainder.power === null ? null : toPlain(remainder.power), log: remainder.log };
 }
 
+/** A sum without remainder that is not proved to hold along the whole side. */
+const nearOnly = ({ point, variable }: Expansion): string => `the sum is the function itself near ${toPlain(variable)} = ${typeof point === 'string' ? point : toPlain(point)}; further away it may differ`;
+
 /** All fields that follow from the expansion alone; `id`, bound, needed and details are added by the caller. */
 export function expansionAnswer(expansion: Expansion): ExpandAnswer {
+  const exact = isExactOnSide(expansion);
   return {
     ok: true,
     terms: expansion.terms.map(termAnswer),
     ...(isOne(expansion.prefactor) || expansion.prefactor === null ? {} : { prefactor: toPlain(expansion.prefactor) }),
     remainder: remainderAnswer(expansion),
-    exact: expansion.exact,
+    exact,
     latex: expansionLatex(expansion),
     text: expansionText(expansion),
     equation: equationLatex(expansion),
@@ -40,7 +45,7 @@ export function expansionAnswer(expansion: Expansion): ExpandAnswer {
       : {}),
     ...(expansion.divergent ? { divergent: true } : {}),
     ...(expansion.oscillating ? { oscillating: true } : {}),
-    assumptions: expansion.assumptions,
+    assumptions: expansion.exact && !exact ? [...expansion.assumptions, nearOnly(expansion)] : expansion.assumptions,
     ...(expansion.left ? { left: expansionAnswer(expansion.left) } : {}),
     ...(expansion.branches ? { branches: expansion.branches.map(expansionAnswer) } : {}),
     ...(expansion.components ? { components: expansion.components.map((c) => ({ unknown: toLatex(c.unknown), expansion: expansionAnswer(c.expansion) })) } : {}),

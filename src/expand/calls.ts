@@ -9,6 +9,8 @@ import {
 } from '../series/index.ts';
 import { sineOfArctangent } from './arcsine.ts';
 import { evaluateDescribed, refusePole } from './described.ts';
+import { withGammaShiftsJoined } from './gamma-shifts.ts';
+import { perfectPower } from './perfect-power.ts';
 import type { Evaluate, Session } from './session.ts';
 
 export function evaluateCall(s: Session, e: CallNode, evaluate: Evaluate): Multi {
@@ -29,6 +31,8 @@ export function evaluateCall(s: Session, e: CallNode, evaluate: Evaluate): Multi
   const [tree] = e.args;
   const sine = e.function === 'atan' && tree && first !== undefined ? sineOfArctangent(c, tree, first) : null;
   if (sine) return evaluate(s, build.call('asin', sine));
+  const root = e.function === 'sqrt' && tree && first !== undefined ? perfectPower(s, tree, first, Q.HALF) : null;
+  if (root !== null) return root;
   if (direct && first !== undefined && args.length === 1) return remembered(s, e.function, first, () => direct(s, first));
   const several = compound[e.function];
   if (several) return several(s, args);
@@ -118,7 +122,8 @@ function remembered(s: Session, key: string, argument: Multi, compute: () => Mul
 /** Evaluates the definition once, with the arguments bound to fresh symbols. */
 function evaluateDefinition(s: Session, description: FunctionDescription, args: readonly Multi[], evaluate: Evaluate): Multi {
   const names = args.map((_, k) => `argument'${k}`);
-  const tree = description.definition?.(args.map((a, k) => (a instanceof Series ? build.symbol(names[k] as string) : exactOf(s.context, a))));
+  const defined = description.definition?.(args.map((a, k) => (a instanceof Series ? build.symbol(names[k] as string) : exactOf(s.context, a))));
+  const tree = defined && withGammaShiftsJoined(defined);
   if (!tree) throw new Error('a definition that was there is gone');
   const bindings = new Map(s.bindings);
   args.forEach((a, k) => {

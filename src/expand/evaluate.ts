@@ -11,6 +11,7 @@ import { evaluateCall } from './calls.ts';
 import { refusePoleOf } from './described.ts';
 import { evaluateIndexed } from './sums/evaluate-sum.ts';
 import { evaluateIntegral } from './integrals/integral.ts';
+import { perfectPower } from './perfect-power.ts';
 import type { Session } from './session.ts';
 
 export function evaluate(s: Session, e: Expression): Multi {
@@ -100,7 +101,8 @@ function evaluatePower(s: Session, base: Expression, exponent: Expression): Mult
   if (!varies(s, exponent)) {
     const e = constantOf(s, exponent);
     if (e instanceof Series) throw new Error('a constant exponent that varies');
-    return power(c, evaluate(s, base), e);
+    const b = evaluate(s, base);
+    return perfectPower(s, base, b, e) ?? power(c, b, e);
   }
   const e = evaluate(s, exponent);
   if (base.kind === 'constant' && base.name === 'e') return exponential(c, e);
@@ -120,7 +122,7 @@ function evaluateRoot(s: Session, degree: Expression, radicand: Expression): Mul
   const odd = isRational(n) && n.den === 1n && n.num % 2n !== 0n;
   if (odd && !isRealMulti(c, f)) throw new Declined('no-expansion', 'The real root of a quantity that is not real has no meaning; write a power instead.');
   if (odd && f instanceof Series && eventualSign(c, f) === -1) return negate(c, power(c, negate(c, f), exponent));
-  return power(c, f, exponent);
+  return perfectPower(s, radicand, f, exponent) ?? power(c, f, exponent);
 }
 
 /** O(g): nothing is known from g's leading monomial on. */
@@ -134,13 +136,12 @@ function orderTerm(s: Session, argument: Expression, little: boolean): Multi {
   return orderSeries(c, lead, () => ({ kind: 'order', little: false, argument: exactOf(c, size) }));
 }
 
-/** A derivative in a symbol that varies with t: df/dv = theta(f)/theta(v). In another symbol it is a derivative in a parameter. */
+/** A derivative in a symbol that varies with t (or in what stands for it at another point): df/dv = theta(f)/theta(v). In another symbol it is a derivative in a parameter. */
 function evaluateDerivative(s: Session, e: Extract<Expression, { kind: 'derivative' }>): Multi {
   const c = s.context;
-  if (e.variable.kind !== 'symbol') throw new Declined('bad-request', 'A derivative is taken in a symbol; replace the expression below the fraction bar by one symbol.');
-  const bound = s.bindings.get(e.variable.name);
-  if (bound === undefined) throw new Declined('no-expansion', 'A derivative in a parameter is not expanded; carry it out first.');
-  const speed = theta(c, bound);
+  if (!varies(s, e.variable)) throw new Declined('no-expansion', 'A derivative in a parameter is not expanded; carry it out first.');
+  const speed = theta(c, evaluate(s, e.variable));
+  if (isKnownZero(c, speed)) throw new Declined('no-expansion', 'A derivative in a quantity that stays constant has no meaning; correct the formula.');
   let value = evaluate(s, e.body);
   if (isKnownZero(c, value)) return Q.ZERO;
   for (let k = 0; k < e.times; k += 1) value = divide(c, theta(c, value), speed);

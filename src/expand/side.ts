@@ -1,10 +1,11 @@
 /** One side of a point: the function as a multiseries in t -> 0+, and its first terms. */
 import { type Expression, Q, type Rational } from '../expression/index.ts';
 import { type Budget, Declined } from '../outcome.ts';
-import { addElements, compareExponents, type Context, type Multi, negateElement } from '../series/index.ts';
+import { addElements, compareExponents, type Context, type Multi, negateElement, plainText } from '../series/index.ts';
 import { evaluate } from './evaluate.ts';
 import type { ExpansionProblem } from './expansion.ts';
 import { type RawTerm, rawTerms } from './flatten.ts';
+import { withGammaShiftsJoined } from './gamma-shifts.ts';
 import { type Direction, openSide } from './open-side.ts';
 
 export interface SideResult {
@@ -19,7 +20,7 @@ export interface SideResult {
 
 export function expandSide(problem: ExpansionProblem, direction: Direction, budget: Budget): SideResult {
   const { context, session, fromVariable, toVariable } = openSide(problem, direction, budget);
-  const series = evaluate(session, fromVariable(problem.function));
+  const series = evaluate(session, fromVariable(withGammaShiftsJoined(problem.function)));
   return { context, series, ...takeTerms(context, series, problem.terms, problem.order), toVariable };
 }
 
@@ -35,10 +36,20 @@ export function takeTerms(c: Context, series: Multi, count: number | undefined, 
     if (full || term.order) return { terms, remainder: shownSize(c, term, terms[terms.length - 1]) };
     terms.push(term);
     if (count === undefined && terms.length > MOST_ABOVE_ORDER) {
-      throw new Declined('bad-request', 'Infinitely many terms on a slower scale lie above that power; ask for a number of terms instead.');
+      throw new Declined('bad-request', `Infinitely many terms that differ by powers of ${slowScale(terms)} lie above that power; ask for a number of terms instead.`);
     }
   }
   return { terms, remainder: null };
+}
+
+/** What the terms of one power are a series in. */
+function slowScale(terms: readonly RawTerm[]): string {
+  const last = terms[terms.length - 1];
+  const before = terms[terms.length - 2];
+  const factor = last?.factors.find((f) => !before?.factors.some((g) => g.element === f.element && f.exponent === g.exponent));
+  const text = factor && last?.log === before?.log ? plainText(factor.element.kind === 'logarithm' && factor.element.expression.kind === 'power' ? factor.element.expression.base : factor.element.expression) : null;
+  // Symbols of the local chart say nothing to the reader.
+  return text !== null && !text.includes("'") ? text : 'the logarithm';
 }
 
 /** What was dropped beyond all powers is stated as the next power of t behind the last term. */

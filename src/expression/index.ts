@@ -3,6 +3,7 @@ export * from './expression.ts';
 export { markedName } from './derivativeMarks.ts';
 export { BOLD, isVectorName, setBold } from './vectorNames.ts';
 export { PLAIN_STYLE, type DocumentStyle, type OrderStyle } from './style.ts';
+export { type Linear, linearIn } from './linear.ts';
 export { joinRationals, literalRational, rationalOf } from './numbers.ts';
 export * as build from './build.ts';
 export * as Q from './rational.ts';

@@ -5,3 +5,4 @@ export { LANGUAGE_FAMILIES, type LanguageFamily, languageFamily } from './naming
 export { acceptsArity, allFunctions, codeCall, codeWriting, describe, lookupCode, lookupLatex, lookupLatexLetter, lookupPlain, type LatexShape } from './registry.ts';
 export { asInteger, asMultipleOfImaginaryPi, asMultipleOfPi, signedSquare } from './exactForms.ts';
 export { isolateRoots, rootArguments, rootBall } from './algebraic/index.ts';
+export { collected } from './linear.ts';

@@ -1,6 +1,6 @@
 /** erf and its relatives, Fresnel integrals. Sources: DLMF 7.6, 7.12, 7.17. */
 import { type Expression, Q, type Rational } from '../../expression/index.ts';
-import { cos, exp, half as oneHalf, log, minus, neg, over, pi, plus, q, sin, sqrt, square, times } from '../compose.ts';
+import { call, cos, exp, half as oneHalf, log, minus, neg, over, pi, plus, pow, q, sin, sqrt, square, times } from '../compose.ts';
 import type { FormalSeries, LocalForm, Place } from '../description.ts';
 import { alternating, F1, F2, form, isAt, series } from '../formal.ts';
 import { inverseTail } from './inverseTail.ts';
@@ -62,20 +62,35 @@ const inverseErrorNumbers = fullRecurrence<Rational>([Q.ONE], (k, c) => {
 const inverseErrorSeries = (x: Expression): FormalSeries =>
   series(times(oneHalf, sqrt(pi), x), (j) => (j % 2 === 0 ? Q.ZERO : Q.divide(inverseErrorNumbers((j - 1) / 2), Q.rational(j))));
 
+/** Coefficients of P_n with P_1 = 1, P_(n+1) = P_n' + 2 n y P_n, lowest power first. */
+const inverseErrorPolynomial = fullRecurrence<readonly bigint[]>([[], [1n]], (n, p) => {
+  const before = p[n - 1] ?? [];
+  return Array.from({ length: before.length + 1 }, (_, k) => BigInt(k + 1) * (before[k + 1] ?? 0n) + 2n * BigInt(n - 1) * (before[k - 1] ?? 0n));
+});
+
+/** inverf(center + u) = y + sum of (sqrt(pi)/2 e^(y^2) u)^n P_n(y)/n!, y = inverf(center): inverf' = sqrt(pi)/2 e^(inverf^2) differentiated n - 1 times (DLMF 7.17.3). */
+const inverseErrorTaylor = (y: Expression, u: Expression): FormalSeries =>
+  series(times(oneHalf, sqrt(pi), exp(square(y)), u), (n) => (n === 0 ? y : times(q(1n, factorial(n)), plus(...inverseErrorPolynomial(n).map((a, k) => times(q(a), pow(y, k)))))));
+
+/** A number inside (-1, 1), or a quantity that is not a plain number. */
+const mayLieInside = (x: Expression): boolean => x.kind !== 'number' || Q.compare(Q.absolute(x.value), Q.ONE) < 0;
+
 export function erfinvLocal(_args: readonly Expression[], _index: number, place: Place): LocalForm | null {
   const u = atZero(place);
   if (u) return form(F1, [inverseErrorSeries(u)], 'DLMF 7.17.2; Carlitz 1963 for the recurrence (from memory)');
   if (place.kind !== 'finite') return null;
   // inverf(1 - v) = inverfc(v), odd.
   if (isAt(place, 1)) return form(inverseTail(neg(log(neg(place.offset)))), [], 'DLMF 7.17(iii), 7.12.1');
-  return isAt(place, -1) ? form(neg(inverseTail(neg(log(place.offset)))), [], 'DLMF 7.17(iii), 7.12.1') : null;
+  if (isAt(place, -1)) return form(neg(inverseTail(neg(log(place.offset)))), [], 'DLMF 7.17(iii), 7.12.1');
+  return mayLieInside(place.center) ? form(F1, [inverseErrorTaylor(call('erfinv', place.center), place.offset)], 'DLMF 7.17.3, differentiated') : null;
 }
 export function erfcinvLocal(_args: readonly Expression[], _index: number, place: Place): LocalForm | null {
   if (place.kind !== 'finite') return null;
   if (isAt(place, 0)) return form(inverseTail(neg(log(place.offset))), [], 'DLMF 7.17(iii), 7.12.1');
   if (isAt(place, 2)) return form(neg(inverseTail(neg(log(neg(place.offset))))), [], 'DLMF 7.17(iii), 7.12.1');
-  if (!isAt(place, 1)) return null;
-  return form(neg(F1), [inverseErrorSeries(place.offset)], 'DLMF 7.17.2: inverfc(1 + u) = -inverf(u)');
+  if (isAt(place, 1)) return form(neg(F1), [inverseErrorSeries(place.offset)], 'DLMF 7.17.2: inverfc(1 + u) = -inverf(u)');
+  const center = minus(1, place.center);
+  return mayLieInside(center) ? form(F1, [inverseErrorTaylor(call('erfcinv', place.center), neg(place.offset))], 'DLMF 7.17.3, differentiated; inverfc(x) = inverf(1 - x)') : null;
 }
 
 /** z^(4k+1) (C) or z^(4k+3) (S) series of DLMF 7.6.4, 7.6.6, as power series in z^4 without the leading power; powers of pi/2 stand in the argument. */

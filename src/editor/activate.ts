@@ -25,6 +25,8 @@ export interface Api {
   readonly activation: number;
   /** Ends the engine in the middle of whatever it is doing, as a crash would. */
   readonly endEngine: () => void;
+  /** Whether the engine is computing something. */
+  readonly engineBusy: () => boolean;
 }
 
 export function activateWith(context: vscode.ExtensionContext, start: ClientOptions['start']): Api {
@@ -66,7 +68,7 @@ export function activateWith(context: vscode.ExtensionContext, start: ClientOpti
     vscode.window.onDidChangeActiveTextEditor(() => status.refresh()),
   );
   context.subscriptions.push(warmWhenIdle(client));
-  return { activation: performance.now() - began, endEngine: () => kill() };
+  return { activation: performance.now() - began, endEngine: () => kill(), engineBusy: () => client.busy };
 }
 
 /**

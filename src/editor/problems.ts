@@ -152,7 +152,7 @@ function claimProblem(document: vscode.TextDocument, finding: Finding, settings:
 }
 
 function noteProblem(document: vscode.TextDocument, note: NoteReading): vscode.Diagnostic {
-  const problem = new vscode.Diagnostic(rangeOf(document, note.start, note.end), note.problem ?? '', vscode.DiagnosticSeverity.Warning);
+  const problem = new vscode.Diagnostic(rangeOf(document, note.start, note.end), said(note.problem ?? ''), vscode.DiagnosticSeverity.Warning);
   problem.source = SOURCE;
   problem.code = 'note';
   return problem;

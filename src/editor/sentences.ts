@@ -1,191 +1,19 @@
 /**
- * The engine's sentences that users meet most, as they stand in its source with {0}, {1} for what is filled in. The engine speaks English, as the command line does;
- * the editor says these in the user's language. A sentence that is not here is shown as it is.
+ * The engine speaks English, as the command line does; the editor says its sentences in the user's language. The sentences are the keys of the translations, as they
+ * stand in the engine's source with {0}, {1} for what is filled in; a test keeps the two together. A sentence that is not among them is shown as it is.
  */
-export const SENTENCES = [
-  // Requests.
-  'This request was cancelled.',
-  'This took longer than {0} ms; ask for fewer terms or allow more time.',
-  'The engine stopped during this request and has been restarted; try again.',
-  'The engine could not be started: {0}.',
-  // Reading.
-  'There is no expression with a function or a quotient at the cursor; select one.',
-  'The selected code is no expression; select one.',
-  'The selection ends inside a name or number; select all of it.',
-  'Nothing is selected; select an expression.',
-  'The text is empty; write an expression.',
-  'Nothing to read here yet; select or write a formula.',
-  'There is nothing to read; select an expression.',
-  'The function {0} is not known; write it with known functions.',
-  'The call {0} is not known; put its value into a variable first.',
-  'This code is no single expression; select one.',
-  'This expression is nested too deeply; select a smaller one.',
-  'A note above says to skip this formula.',
-  'Nothing could be asked about this place; select an expression.',
-  // Expanding and bounding.
-  'The sign of {0} could not be decided; give it as a decimal or simplify it.',
-  'Whether {0} is zero could not be decided; simplify it by hand.',
-  'The first {0} terms of a difference cancel and it could not be decided whether it is zero; simplify the formula by hand.',
-  'No bound could be proved on this interval; try a smaller one.',
-  'The interval needs two different ends, the smaller one first.',
-  'The interval must run from its smaller end to its larger one.',
-  'The point is an essential singularity and the function behaves differently on its two sides; ask for the right or the left side.',
-  'An O-term that is not small stands inside a function; write more terms before it.',
-  'The tolerance "{0}" must be a positive number such as 1e-6.',
-  // Polynomials and guards.
-  'The interval of a fit needs two different ends, the smaller one first.',
-  'No polynomial of degree up to 160 keeps this tolerance; take a smaller interval or a larger tolerance.',
-  'The function is zero where no relative error can be kept; ask for the absolute measure or another interval.',
-  'No best polynomial of this degree was found on this interval; take a smaller interval or another degree.',
-  'The rounding error could not be bounded on this interval; take a smaller one.',
-  // Checking.
+
+/** Sentences that the engine puts together, so that its source holds them in pieces. */
+export const COMPOSED = [
+  'Holds. {0}',
   'Holds: every printed term agrees with the expansion.',
   'Holds: every printed term agrees with the expansion (taken as {0}).',
-  'Holds: the general term is proved for every index.',
-  'Holds: the error on this interval is proved to be at most {0}.',
-  'Holds. {0}',
-  'The sign must be {0}.',
   'The number must be {0}.',
   'The exponent must be {0}.',
   'The number is printed as {0}; {1} is right.',
   'The exponent is printed as {0}; {1} is right.',
-  'A term is missing: {0}.',
-  'The difference is smaller than stated: it is of order {0}.',
-  'This term is not larger than the stated remainder, which absorbs it.',
-  'The two sides are not equal; an approximation sign or a remainder is meant.',
-  'The error on this interval reaches {0}.',
-  'The stated tolerance is too close to the largest error to be decided.',
-  'What {0} stands for is not said in this document.',
-  'In which quantity this is an expansion is not plain; say so with a note such as leading-order: small h.',
-  'It is not plain in which quantity, and where, this is an expansion; say so with a note such as leading-order: small x.',
-  'The definition of the left side that stands in this document does not belong to this claim, or the claim is wrong from its first term.',
-  'Whether a letter here is the imaginary unit is not plain.',
-  'The general term is not that of the function.',
-  // What hover, page and problems can meet beside these, in the order of the engine's rooms.
-  'A bound needs a range for {0}; add an assumption such as 0.9 <= {1} <= 1.1.',
-  'The value needs a range for {0}; add an assumption such as 0.9 <= {1} <= 1.1.',
-  'This could be expanded in {0}; say in which one.',
   'This could be fitted in {0}; say in which one.',
-  'This expression contains no symbol to expand in; choose one that does.',
   'This expression contains no symbol to fit in; choose one that does.',
-  'The formula does not contain the chosen quantity; choose another variable.',
-  'The variable does not occur in the formula; name one that does.',
-  'The answer depends on the sign of {0}; assume {1} > 0 or {2} < 0.',
-  'The answer depends on whether {0} lies below or above 1; assume which.',
-  'The function {0} is not known; write it out or choose a known name.',
-  '{0} has no known expansion for a large argument; choose a finite point.',
-  '{0} has no known expansion at this point; choose another one.',
-  '{0} has no finite value at {1}; correct the formula.',
-  'The behaviour of the unspecified function {0} at infinity is not known; choose a finite point.',
-  'The formula is nested too deeply to be expanded; split it into parts.',
-  'An equation or inequality is not a function to expand; choose one side of it.',
-  'This kind of formula is not expanded; rewrite it with sums, products, powers and functions.',
-  'Dots stand for terms that are not written; write an O-term instead.',
-  'A limit inside a formula is not expanded; take the limit first.',
-  'A choice between branches is not expanded; expand the branch that holds at the point.',
-  'The point must not contain the variable; name another point.',
-  'The number of terms must be a whole number from 1 to 100000.',
-  'A divisor or the argument of a logarithm is identically zero; correct the formula.',
-  'The formula divides by zero everywhere; correct the formula.',
-  'The formula takes the logarithm of zero everywhere; correct the formula.',
-  'A division by zero has no value; choose another point or parameter.',
-  'A divisor could not be shown to be non-zero; state an assumption that excludes zero.',
-  'A denominator here is zero or could not be shown to be non-zero; state an assumption that excludes it.',
-  'The function oscillates without bound in frequency at the point (an essential singularity), so it has no expansion there; choose another point.',
-  'The branch of a power or logarithm near its cut could not be decided; choose a side or simplify the argument.',
-  'Vectors are not expanded; write their components.',
-  'An equation has two sides with one equals sign between them; correct it.',
-  'The equation holds no function of this quantity that could be replaced by its leading terms; name another quantity, or the unknown to be solved for.',
-  'No real root was found near the point; name the value that the root tends to.',
-  'The highest derivative is multiplied by the small parameter (a singular perturbation): the solution has no expansion in its powers that holds everywhere; rescale the variable inside the boundary layer.',
-  'This equation has derivatives in several variables (a partial differential equation), which is not solved; write an equation in one variable.',
-  'There are fewer equations than unknown functions; add the missing ones.',
-  'No bound of the error could be proved on this interval; the function may be singular there. Take a smaller interval.',
-  'The function has a singularity in the interval that no sum removes.',
-  'The tolerance must be greater than zero.',
-  'The function is not real at {0} = {1}; choose an interval on which it is real.',
-  'The expansion serves the {0} side of the point only; choose an interval on that side.',
-  'The ends of the interval could not be compared with the point; write them as plain numbers.',
-  'The series diverges; for more terms nothing is proved.',
-  'The radius of convergence is not known; for more terms nothing is proved.',
-  'Every number of terms up to {0} is refuted by a proven lower bound of its error.',
-  'The argument has no real value; give a number such as 0.3 or pi/6.',
-  'The function has no real value at this argument; choose another one.',
-  'The error at this argument is too small to be resolved.',
-  'The integral could not be enclosed.',
-  'The integral diverges at one of its limits.',
-  'Only a definite integral has a value; give both limits.',
-  'The end "{0}" of the interval cannot be read; write an exact value such as 1/2 or pi/4.',
-  'The end "{0}" of the interval cannot be read; write an exact value such as 1/2, pi/4 or inf.',
-  'The end "{0}" of the interval must be a finite real number.',
-  'The end "{0}" of the interval must be a real number or inf.',
-  'The order "{0}" must be a rational number such as 6 or 7/2.',
-  'A fit needs numbers: give a value for {0}.',
-  'A guard needs numbers: give a value for {0}.',
-  'The variable "{0}" of the intervals cannot be read; write it as in the text.',
-  'The interval of {0} needs its smaller end first.',
-  'Functions of two variables are fitted for hypot(x, y), sqrt(x^2 + y^2) and atan2(y, x); give values for the other symbols.',
-  'Functions of two variables are fitted by reduction, as one function in binary32 or binary64; leave method, reduction, pieces and result out.',
-  'Arguments are reduced for exp, log, sin, cos, asin, acos, atan and constant powers of one variable, in binary32 and binary64, by the method minimax; leave the reduction out.',
-  'Rounding in {0} takes this tolerance away: the smallest proven error is {1}; allow a larger tolerance or a wider format.',
-  'Rounding in {0} takes the tolerance {1} away when the argument is reduced; allow a larger tolerance or a wider format.',
-  'The evaluation can overflow {0} on this interval; take a smaller interval or a wider format.',
-  'The function reaches {0}, beyond the largest {1} number; take a smaller interval or a wider format.',
-  'A coefficient is beyond the range of {0}; take another format or interval.',
-  'The leading coefficient of this polynomial is a float already, or cannot be split in two words; leave words out.',
-  'The relative error of this polynomial reaches one; ask for a higher degree or the absolute measure.',
-  'The rounding error relative to the function could not be bounded; ask for the absolute measure.',
-  'The function has several zeros on this interval; split the interval between them or ask for the absolute measure.',
-  'The function has a zero near {0} that is no float, where no relative error can be kept; ask for the absolute measure or leave that point out.',
-  'The function has no value inside the interval; take an interval without that point.',
-  'The function has no real value at {0}; take an interval inside its domain.',
-  'The function has no real value at an end of the interval; take an interval inside its domain.',
-  '{0} has no assertions; leave the assertion out.',
-  'A guard needs a point that is a rational number, such as 0 or 1, or inf; choose the nearest number of the format.',
-  'A guard is made for a floating-point format; choose binary32 or binary64.',
-  'The format "{0}" is not known; choose binary32 or binary64.',
-  '{0} has no {1} type; choose another format.',
-  '{0} has no library function for {1}; choose another language or expand it first.',
-  'The stated order is too strong.',
-  'The function has no term of this order.',
-  'The term of this order is {0}.',
-  'The difference is of order {0}, so this {1}-term promises too much.',
-  'The two sides differ by more than the claim allows.',
-  'From this term on the two sides differ by more than the claim allows.',
-  'The first {0} terms agree; that the general term holds for every index is not proved.',
-  'The term with index {0} is not that of the function.',
-  'The first terms of this sum are not those of the function.',
-  'The function does not hold {0}, in which the printed side runs.',
-  'How much the left side leaves out cannot be told.',
-  'The left side leaves out more than the right side states.',
-  'This claim took too long to judge; allow more time.',
-  'No printed term was found.',
-  'The ends of the interval are not plain numbers.',
-  'The signs that open and close mathematics are not paired here; write each formula between its own.',
-  'Holds: the {0} of this polynomial against {1}, rounding apart, is proved to be at most {2}.',
-  'The {0} of this polynomial against {1} reaches {2}.',
-  'The {0} against {1} is too close to the promised one to be decided.',
-  'There is no formula at the cursor; put it into a formula or select one.',
-  'There is nothing to expand at the cursor; select a function or a quotient.',
-  'The formula ends too early; add what is missing.',
-  '{0} is not understood here; remove it or add an operator before it.',
-  '{0} cannot stand here; remove it or add what belongs before it.',
-  'The bracket opened here is never closed; close it with {0}.',
-  'The brace opened here is never closed; close it with }.',
-  '{0} stands here without an opening one; remove it or add the opening one.',
-  'The formula ends after {0}; add the right side.',
-  'The formula ends after {0}; add the next term.',
-  'A factor is missing after {0}; add it.',
-  'The argument of {0} is missing; write it in brackets.',
-  'This formula is too long to read; select a smaller piece.',
-  'The note says nothing yet; write for example small x, on |x| <= 0.5, within 1e-6.',
-  'Something is missing after “{0}”; write {1}.',
-  'A list of values is no expression; select one of its entries.',
-  'This block has several statements; select the expression inside it.',
-  'A remainder is not smooth; select an expression without it.',
-  'This expression is too large or too deeply nested to work on ({0}); take a part of it.',
-  'The engine met a defect of its own ({0}); please report the expression.',
-  'The tool met a defect of its own ({0}); please report the expression.',
 ] as const;
 
 export interface Recognised {
@@ -193,17 +21,41 @@ export interface Recognised {
   readonly values: readonly string[];
 }
 
-const patterns: readonly { readonly sentence: string; readonly pattern: RegExp }[] = SENTENCES.map((sentence) => ({
-  sentence,
-  pattern: new RegExp(`^${sentence.replace(/[.*+?^$()|[\]\\]/g, '\\$&').replace(/\{\d\}/g, '([^]+?)')}$`),
-}));
-
-/** Which sentence a message is, and what is filled in; the one with the most words of its own where several fit. */
-export function recognise(message: string): Recognised | null {
-  let best: Recognised | null = null;
-  for (const { sentence, pattern } of patterns) {
-    const match = pattern.exec(message);
-    if (match && (!best || sentence.length > best.sentence.length)) best = { sentence, values: match.slice(1) };
-  }
-  return best;
+interface Pattern {
+  readonly sentence: string;
+  readonly pattern: RegExp;
+  /** Characters of its own words. */
+  readonly own: number;
 }
+
+const PLACE = /\{(\d)\}/g;
+
+/** Labels and menu titles are no sentences. */
+const isSentence = (key: string): boolean => key.includes(' ') && /\.(?: \{\d\})?$/.test(key);
+
+/** Tells which of the sentences a message is, and what is filled in; the one with the most words of its own where several fit. */
+export function recogniser(keys: readonly string[]): (message: string) => Recognised | null {
+  const patterns: readonly Pattern[] = keys.filter(isSentence).map((sentence) => {
+    const words = sentence.split(PLACE).filter((_piece, i) => i % 2 === 0);
+    return { sentence, own: words.join('').length, pattern: new RegExp(`^${words.map((piece) => piece.replace(/[.*+?^$()|[\]{}\\]/g, '\\$&')).join('([^]*?)')}$`) };
+  });
+  return (message) => {
+    let best: (Recognised & { readonly own: number }) | null = null;
+    for (const { sentence, pattern, own } of patterns) {
+      if (best && own <= best.own) continue;
+      const match = pattern.exec(message);
+      if (match) best = { sentence, values: inOrder(sentence, match.slice(1)), own };
+    }
+    return best && { sentence: best.sentence, values: best.values };
+  };
+}
+
+/** Values by their numbers, which need not stand in order. */
+function inOrder(sentence: string, found: readonly string[]): readonly string[] {
+  const values: string[] = [];
+  for (const [i, place] of [...sentence.matchAll(PLACE)].entries()) values[Number(place[1])] = found[i] ?? '';
+  return values;
+}
+
+/** Puts the values in their places; braces that belong to a formula stay. */
+export const filled = (sentence: string, values: readonly string[]): string => sentence.replace(PLACE, (place, index: string) => values[Number(index)] ?? place);

@@ -1,12 +1,18 @@
 /** Sentences that hover, menus and page share. */
 import * as vscode from 'vscode';
 import type { Question, Source, Sources } from '../worker/desk/types.ts';
-import { recognise } from './sentences.ts';
+import { filled, type Recognised, recogniser } from './sentences.ts';
 
-/** An engine's sentence in the user's language; what is filled in may be such a sentence itself. */
+let recognise: ((message: string) => Recognised | null) | null = null;
+
+/** An engine's sentence in the user's language; what is filled in may be such a sentence, or a word of the engine's, itself. */
 export function said(message: string): string {
+  const { bundle } = vscode.l10n;
+  if (!bundle) return message;
+  recognise ??= recogniser(Object.keys(bundle));
   const known = recognise(message);
-  return known ? vscode.l10n.t(known.sentence, ...known.values.map((value) => (value.length < message.length ? said(value) : value))) : message;
+  if (!known) return bundle[message] ?? message;
+  return filled(bundle[known.sentence] ?? known.sentence, known.values.map((value) => (value.length < message.length ? said(value) : value)));
 }
 
 export function sourceName(source: Source | undefined): string {

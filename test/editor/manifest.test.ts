@@ -1,13 +1,12 @@
 /** Facts of the manifest that a marketplace or an editor would refuse or users would miss. */
 import { readdirSync, readFileSync } from 'node:fs';
 import { describe, expect, it } from 'vitest';
-import { recognise, SENTENCES } from '../../src/editor/sentences.ts';
+import { COMPOSED } from '../../src/editor/sentences.ts';
 import { WORDS } from '../../src/webview/words.ts';
+import { engineSentences, FILLED_IN } from './engineSentences.ts';
 
 const root = new URL('../../', import.meta.url);
 const read = (name: string): string => readFileSync(new URL(name, root), 'utf8');
-/** Every TypeScript file below a folder. */
-const sources = (folder: string): string[] => readdirSync(new URL(folder, root), { recursive: true, encoding: 'utf8' }).filter((name) => name.endsWith('.ts')).map((name) => `${folder}${name}`);
 interface Setting {
   readonly default?: unknown;
   readonly markdownDescription?: string;
@@ -72,27 +71,11 @@ describe('languages', () => {
     expect(Object.keys(german ?? {}).sort()).toEqual(Object.keys(english ?? {}).sort());
   });
   it('translates every sentence of the program, and nothing that is gone', () => {
-    const said = new Set<string>([...Object.values(WORDS), ...SENTENCES]);
+    const said = new Set<string>([...Object.values(WORDS), ...engineSentences(), ...COMPOSED, ...FILLED_IN]);
     for (const file of readdirSync(new URL('src/editor/', root)))
       for (const match of read(`src/editor/${file}`).matchAll(/l10n\.t\(\s*'((?:[^'\\]|\\.)*)'/g)) said.add((match[1] ?? '').replaceAll("\\'", "'"));
     expect([...said].filter((sentence) => !bundle?.[sentence])).toEqual([]);
     expect(Object.keys(bundle ?? {}).filter((sentence) => !said.has(sentence))).toEqual([]);
-  });
-  it('knows the sentences of the engine as they stand in its source', () => {
-    const lines = sources('src/').flatMap((file) => (file.endsWith('sentences.ts') ? [] : read(file).split('\n').filter((line) => /['`]/.test(line))));
-    // A fit says of its symbol what an expansion says. `The ${what} is printed as` stands for several sentences, each with its own word.
-    const pieces = (sentence: string): string[] => sentence.replace(/^The (?:number|exponent|sign) (?=is printed|must)/, '').replace(/^Holds\. (?=\{)/, '')
-        .replace('fitted in', 'expanded in')
-        .replace('to fit in', 'to expand in')
-        .replace(/ \(taken as \{0\}\)\.$|\.$/, '').split(/\{\d\}/).filter((piece) => piece.trim() !== '');
-    expect(SENTENCES.filter((sentence) => !lines.some((line) => pieces(sentence).every((piece) => line.includes(piece))))).toEqual([]);
-  });
-  it('recognises them with what is filled in', () => {
-    expect(recognise('The number is printed as 620; 720 is right.')).toEqual({ sentence: 'The number is printed as {0}; {1} is right.', values: ['620', '720'] });
-    expect(recognise('Holds: every printed term agrees with the expansion (taken as the Bessel function).')?.values).toEqual(['the Bessel function']);
-    expect(recognise('Holds. The difference is smaller than stated: it is of order the power 4 of x.')).toEqual({ sentence: 'Holds. {0}', values: ['The difference is smaller than stated: it is of order the power 4 of x.'] });
-    expect(recognise('No such sentence.')).toBeNull();
-    for (const sentence of SENTENCES) expect(recognise(sentence)?.sentence).toBe(sentence);
   });
   it('keeps the places for values in every translation', () => {
     const places = (text: string): string => [...text.matchAll(/\{\d\}/g)].map(String).sort().join();

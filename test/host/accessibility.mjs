@@ -2,7 +2,7 @@
 import { mkdirSync, readFileSync } from 'node:fs';
 import path from 'node:path';
 import { ROOT, serveWorkbench } from '../../src/start/workbench.mjs';
-import { expansionFrame, focusEditor, openFromExplorer, openWorkbench, pageSays, runCommand, select } from './driver.mjs';
+import { expansionFrame, focusEditor, openFromExplorer, openWorkbench, PATIENCE, pageSays, runCommand, select } from './driver.mjs';
 import { limited, SETTINGS } from './runner.mjs';
 
 const DEMO = path.join(ROOT, 'media/demo');
@@ -21,7 +21,7 @@ export async function accessibility(browser, tally, wanted = []) {
     const server = await serveWorkbench({ folder: DEMO, settings: { ...SETTINGS, 'workbench.colorTheme': theme } });
     const { page, close } = await openWorkbench(browser, server.url);
     try {
-      await limited(inspect(page, axe, theme === THEMES[0] ? tally : null), 150_000, name);
+      await limited(inspect(page, axe, theme === THEMES[0] ? tally : null), 4 * PATIENCE, name);
       tally.pass(name);
     } catch (error) {
       tally.fail(`${name}: ${error.message}`);
@@ -55,11 +55,11 @@ const MODES = {
     await select(page, readFileSync(path.join(DEMO, 'controller.c'), 'utf8'), 'sinf(angle)');
     await runCommand(page, 'Leading Order: Replace Call by Polynomial');
     const frame = await expansionFrame(page, '#mode-fit[aria-pressed=true]');
-    await frame.waitForFunction(() => document.getElementById('variable')?.value === 'angle', null, { timeout: 30_000 });
+    await frame.waitForFunction(() => document.getElementById('variable')?.value === 'angle', null, { timeout: PATIENCE });
     await frame.locator('#from').fill('-0.5');
     await frame.locator('#to').fill('0.5');
     await frame.locator('#compute').click();
-    await frame.locator('#fit-plot').waitFor({ timeout: 60_000 });
+    await frame.locator('#fit-plot').waitFor({ timeout: PATIENCE });
     return frame;
   },
   guard: async (page) => {
@@ -67,7 +67,7 @@ const MODES = {
     await select(page, readFileSync(path.join(DEMO, 'controller.c'), 'utf8'), '(cosh(u) - 1.0) / (u * u)');
     await runCommand(page, 'Leading Order: Guard This Expression');
     const frame = await expansionFrame(page, '#mode-guard[aria-pressed=true]');
-    await frame.locator('table.figures').first().waitFor({ timeout: 60_000 });
+    await frame.locator('table.figures').first().waitFor({ timeout: PATIENCE });
     return frame;
   },
 };

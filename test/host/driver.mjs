@@ -1,7 +1,7 @@
 // What a person does in the workbench, as functions over a page. Everything waits for what is seen, never for time to pass.
 
-/** Long, since a busy machine is slow; whoever sees what is wanted waits no longer. */
-const PATIENCE = 60_000;
+/** Long enough for a machine ten times slower than usual; whoever sees what is wanted waits no longer. */
+export const PATIENCE = 150_000;
 
 /** Opens the workbench and waits for the first editor or, without one, for the explorer. */
 export async function openWorkbench(browser, url, { width = 1400, height = 900, scale = 1 } = {}) {
@@ -12,7 +12,7 @@ export async function openWorkbench(browser, url, { width = 1400, height = 900, 
   // Content-policy violations and failed scripts of the page itself show up on the console only.
   page.on('console', (message) => message.type() === 'error' && /Content Security Policy|leading-order|Refused/i.test(message.text()) && errors.push(message.text().slice(0, 300)));
   await page.goto(url);
-  await page.waitForSelector('.explorer-folders-view .monaco-list-row', { timeout: 60_000 });
+  await page.waitForSelector('.explorer-folders-view .monaco-list-row', { timeout: PATIENCE });
   return { page, errors, close: () => context.close() };
 }
 
@@ -49,7 +49,7 @@ async function quickInput(page, key) {
   for (let i = 0; i < 10; i += 1) {
     await page.keyboard.press(key);
     try {
-      await box.waitFor({ state: 'visible', timeout: 1500 });
+      await box.waitFor({ state: 'visible', timeout: 1500 * (i + 1) });
       return box;
     } catch {
       // again
@@ -82,7 +82,7 @@ export async function openFromExplorer(page, name) {
   for (let i = 0; i < 5 && !(await row.isVisible()); i += 1) {
     await focusEditor(page);
     await page.keyboard.press('Control+Shift+e');
-    await row.waitFor({ timeout: 3000 }).catch(() => {});
+    await row.waitFor({ timeout: 3000 * (i + 1) }).catch(() => {});
   }
   await row.dblclick();
   await page.locator('.tab.active', { hasText: name }).first().waitFor({ timeout: PATIENCE });
@@ -126,12 +126,12 @@ export function placeOf(source, text, occurrence = 0) {
 /** The hover at the cursor, opened by keyboard. Returns its text once it holds `wanted`. */
 export async function hoverAtCursor(page, wanted) {
   const hover = page.locator('.monaco-hover .hover-contents:visible', { hasText: wanted }).first();
-  const tries = 15;
+  const tries = 10;
   for (let i = 0; i < tries; i += 1) {
     await page.keyboard.press('Control+k');
     await page.keyboard.press('Control+i');
     try {
-      await hover.waitFor({ timeout: 3000 });
+      await hover.waitFor({ timeout: 3000 * (i + 1) });
       break;
     } catch {
       await page.keyboard.press('Escape');
@@ -155,7 +155,7 @@ export async function openFixes(page, wanted) {
   for (let i = 0; i < 8; i += 1) {
     await page.keyboard.press('Control+.');
     try {
-      await row.waitFor({ timeout: 4000 });
+      await row.waitFor({ timeout: 4000 * (i + 1) });
       break;
     } catch {
       if (i === 7) throw new Error(`no quick fix ${JSON.stringify(wanted)}; shown: ${JSON.stringify(await page.locator('.action-widget .monaco-list-row').allInnerTexts())}`);

@@ -2,7 +2,7 @@
 import { readFileSync } from 'node:fs';
 import path from 'node:path';
 import { ROOT } from '../../src/start/workbench.mjs';
-import { chooseFix, closeHover, editorText, expansionFrame, focusEditor, goTo, hoverAtCursor, openFixes, openFromExplorer, pageSays, pause, placeOf, runCommand, select, shownHovers, waitForText } from './driver.mjs';
+import { chooseFix, closeHover, editorText, expansionFrame, focusEditor, goTo, hoverAtCursor, openFixes, openFromExplorer, PATIENCE, pageSays, pause, placeOf, runCommand, select, shownHovers, waitForText } from './driver.mjs';
 
 export const DEMO = path.join(ROOT, 'media/demo');
 const source = (name) => readFileSync(path.join(DEMO, name), 'utf8');
@@ -17,7 +17,7 @@ async function undoTo(page, gone, line) {
   for (let i = 0; i < 3; i += 1) {
     await focusEditor(page);
     await page.keyboard.press('Control+z');
-    const changed = await waitForText(page, gone, { absent: true, timeout: 4000 }).catch(() => null);
+    const changed = await waitForText(page, gone, { absent: true, timeout: 10_000 * (i + 1) }).catch(() => null);
     if (changed !== null) {
       if (line) await waitForText(page, line);
       return;
@@ -42,7 +42,7 @@ export const scenes = {
     for (let i = 0; i < 5 && !(await picture.isVisible()); i += 1) {
       await closeHover(page);
       await hoverAtCursor(page, 'u³/24');
-      await picture.waitFor({ timeout: 1500 }).catch(() => {});
+      await picture.waitFor({ timeout: 1500 * (i + 1) }).catch(() => {});
     }
     const shown = await picture.evaluate((img) => img.complete && img.naturalWidth > 50 && img.naturalHeight > 15);
     holds(shown, 'the picture of the formula is not drawn');
@@ -65,9 +65,9 @@ export const scenes = {
     const frame = await expansionFrame(page, '#formula');
     await frame.locator('#formula').focus();
     await page.keyboard.press('-');
-    await frame.waitForFunction(() => document.getElementById('terms')?.value === '3', null, { timeout: 15_000 });
+    await frame.waitForFunction(() => document.getElementById('terms')?.value === '3', null, { timeout: PATIENCE });
     await page.keyboard.press('+');
-    await frame.waitForFunction(() => document.getElementById('terms')?.value === '4', null, { timeout: 15_000 });
+    await frame.waitForFunction(() => document.getElementById('terms')?.value === '4', null, { timeout: PATIENCE });
     holds((await frame.evaluate(() => document.activeElement?.id)) === 'formula', 'the focus was lost');
   },
 
@@ -78,7 +78,7 @@ export const scenes = {
     await pageSays(frame, /terms? keeps? 1e-9/);
     await frame.locator('button.row').first().click();
     const first = await frame.locator('button.row').first().innerText();
-    await frame.waitForFunction((wanted) => document.getElementById('terms')?.value === wanted, first.trim(), { timeout: 15_000 });
+    await frame.waitForFunction((wanted) => document.getElementById('terms')?.value === wanted, first.trim(), { timeout: PATIENCE });
   },
 
   'the page: insert from it, one undo takes it back': async (page) => {
@@ -101,7 +101,7 @@ export const scenes = {
 
   'LaTeX: a wrong coefficient is underlined and corrected': async (page) => {
     await focusEditor(page);
-    await page.locator('.squiggly-warning').first().waitFor({ timeout: 30_000 });
+    await page.locator('.squiggly-warning').first().waitFor({ timeout: PATIENCE });
     const at = placeOf(source('sag-note.tex'), '620');
     await goTo(page, at.line, at.column + 1);
     await chooseFix(page, 'Correct to');
@@ -116,7 +116,7 @@ export const scenes = {
     const text = await pageSays(frame, /1 claim: it fails/);
     holds(/22\s+fails/.test(text), `the list reads ${text}`);
     await frame.locator('#claim-0').click();
-    await page.locator('.statusbar-item', { hasText: 'Ln 22' }).first().waitFor({ timeout: 10_000 });
+    await page.locator('.statusbar-item', { hasText: 'Ln 22' }).first().waitFor({ timeout: PATIENCE });
     await frame.locator('#mode-expand').click();
   },
 
@@ -141,11 +141,11 @@ export const scenes = {
     await page.locator('.monaco-hover:visible a', { hasText: 'fill in gravity' }).first().click();
     const frame = await expansionFrame(page, '#constants');
     const label = () => frame.evaluate(() => document.getElementById('formula')?.getAttribute('aria-label') ?? '');
-    await frame.waitForFunction(() => document.getElementById('constants')?.checked === true, null, { timeout: 15_000 });
+    await frame.waitForFunction(() => document.getElementById('constants')?.checked === true, null, { timeout: PATIENCE });
     holds(/962361\/20000|962361t²\/20000/.test(await label()) && !(await label()).includes('gravity'), `the page reads ${await label()}`);
     await pageSays(frame, 'gravity = 9.81');
     await frame.locator('#constants').click();
-    await frame.waitForFunction(() => document.getElementById('formula')?.getAttribute('aria-label')?.includes('gravity') === true, null, { timeout: 15_000 });
+    await frame.waitForFunction(() => document.getElementById('formula')?.getAttribute('aria-label')?.includes('gravity') === true, null, { timeout: PATIENCE });
     await focusEditor(page);
   },
 
@@ -157,7 +157,7 @@ export const scenes = {
     await frame.locator('#to').fill('0.5');
     await frame.locator('#tolerance').fill('1e-6');
     await frame.locator('#compute').click();
-    await frame.locator('#apply-0').waitFor({ timeout: 60_000 });
+    await frame.locator('#apply-0').waitFor({ timeout: PATIENCE });
     await pageSays(frame, 'binary32');
     await frame.locator('#apply-0').click();
     const text = await waitForText(page, '1.8f * sin_approximation(angle)');
@@ -172,7 +172,7 @@ export const scenes = {
     await runCommand(page, 'Leading Order: Guard This Expression');
     const frame = await expansionFrame(page, '#compute');
     await frame.locator('#compute').click();
-    await frame.locator('#apply-0').waitFor({ timeout: 60_000 });
+    await frame.locator('#apply-0').waitFor({ timeout: PATIENCE });
     const told = await pageSays(frame, /largest|worst|at most|bound/i);
     holds(/guarded\(double u\)/.test(told) && /sinh/.test(told), `the page shows neither code nor form: ${told}`);
     holds((await frame.evaluate(() => document.querySelectorAll('table.figures tbody tr').length)) >= 3, 'the ranges are missing');
@@ -214,9 +214,9 @@ export const scenes = {
     await runCommand(page, 'Leading Order: Forget Answers for This File');
     await select(page, source('field-notes.md'), '\\sqrt{1 + q}');
     await runCommand(page, 'Leading Order: Set Small Quantity');
-    await page.locator('.quick-input-list .monaco-list-row', { hasText: 'q' }).first().waitFor({ timeout: 20_000 });
+    await page.locator('.quick-input-list .monaco-list-row', { hasText: 'q' }).first().waitFor({ timeout: PATIENCE });
     await page.keyboard.press('Enter');
-    await page.locator('.quick-input-title', { hasText: 'tend' }).first().waitFor({ timeout: 20_000 });
+    await page.locator('.quick-input-title', { hasText: 'tend' }).first().waitFor({ timeout: PATIENCE });
     await page.keyboard.press('Enter');
     const frame = await expansionFrame(page, '#formula');
     await pageSays(frame, 'field-notes.md');
@@ -253,12 +253,16 @@ export const scenes = {
       await focusEditor(page);
       await runCommand(page, 'Preferences: Toggle between Light/Dark Themes');
       const frame = await expansionFrame(page);
-      await frame.waitForFunction((wanted) => document.body.classList.contains(wanted), kind, { timeout: 20_000 });
+      await frame.waitForFunction((wanted) => document.body.classList.contains(wanted), kind, { timeout: PATIENCE });
       await focusEditor(page);
       await select(page, source('sag-note.tex'), SAG);
-      await hoverAtCursor(page, 'u³/24');
-      const src = await page.locator('.monaco-hover img[src^="data:image/svg"]').first().getAttribute('src', { timeout: 5000 });
-      holds(decodeURIComponent(src ?? '').includes(`#${ink}`), `the ink is not ${ink} in ${kind}`);
+      const picture = page.locator(`.monaco-hover:visible img[src^="data:image/svg"][src*="${ink}"]`).first();
+      for (let i = 0; i < 6 && !(await picture.isVisible()); i += 1) {
+        await closeHover(page);
+        await hoverAtCursor(page, 'u³/24');
+        await picture.waitFor({ timeout: 2000 * (i + 1) }).catch(() => {});
+      }
+      holds(await picture.isVisible(), `the ink is not ${ink} in ${kind}`);
       await closeHover(page);
     }
   },

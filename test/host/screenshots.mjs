@@ -8,7 +8,7 @@ import { requireNode } from '../../src/start/requireNode.mjs';
 requireNode();
 const { launchBrowser } = await import('../../src/start/browser.mjs');
 const { ROOT, serveWorkbench } = await import('../../src/start/workbench.mjs');
-const { closeHover, expansionFrame, focusEditor, goTo, hoverAtCursor, openFixes, openFromExplorer, openWorkbench, pageSays, pause, placeOf, runCommand, select } = await import('./driver.mjs');
+const { closeHover, expansionFrame, focusEditor, goTo, hoverAtCursor, openFixes, openFromExplorer, openWorkbench, PATIENCE, pageSays, pause, placeOf, runCommand, select } = await import('./driver.mjs');
 
 const DEMO = path.join(ROOT, 'media/demo');
 const NOTE = readFileSync(path.join(DEMO, 'sag-note.tex'), 'utf8');
@@ -26,7 +26,7 @@ const SCENES = {
     await pageSays(frame, 'sag-note.tex:16');
     await frame.locator('#terms').fill('2');
     await frame.locator('#terms').press('Enter');
-    await frame.waitForFunction(() => document.querySelector('.plots') !== null && document.getElementById('terms')?.value === '2', null, { timeout: 20_000 });
+    await frame.waitForFunction(() => document.querySelector('.plots') !== null && document.getElementById('terms')?.value === '2', null, { timeout: PATIENCE });
     await focusEditor(page);
     await pause(500);
     return { x: 0, y: 0, width: 1120, height: 1120 };
@@ -50,7 +50,7 @@ SCENES.fixes = async (page) => {
 SCENES.problems = async (page) => {
   await page.keyboard.press('Escape');
   await focusEditor(page);
-  await page.locator('.squiggly-warning').first().waitFor({ timeout: 30_000 });
+  await page.locator('.squiggly-warning').first().waitFor({ timeout: PATIENCE });
   const at = placeOf(NOTE, '620');
   await goTo(page, at.line, at.column + 1);
   // A hover takes a quarter of the editor's height at most.
@@ -65,7 +65,7 @@ async function hoverWithPicture(page, wanted) {
   for (let i = 0; i < 8 && !(await picture.isVisible()); i += 1) {
     await closeHover(page);
     await hoverAtCursor(page, wanted);
-    await picture.waitFor({ timeout: 1500 }).catch(() => {});
+    await picture.waitFor({ timeout: 1500 * (i + 1) }).catch(() => {});
   }
   await pause(400);
 }
@@ -89,7 +89,7 @@ SCENES.polynomial = async (page) => {
   await frame.locator('#measure').selectOption('ulp');
   await frame.locator('#tolerance').fill('4');
   await frame.locator('#compute').click();
-  await frame.locator('#fit-plot').waitFor({ timeout: 60_000 });
+  await frame.locator('#fit-plot').waitFor({ timeout: PATIENCE });
   await pause(500);
   return { x: 0, y: 0, width: 1120, height: 1120 };
 };

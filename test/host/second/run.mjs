@@ -7,7 +7,7 @@ import { requireNode } from '../../../src/start/requireNode.mjs';
 requireNode();
 const { launchBrowser } = await import('../../../src/start/browser.mjs');
 const { CACHE, ROOT } = await import('../../../src/start/workbench.mjs');
-const { focusEditor, openFromExplorer, openWorkbench, pause } = await import('../driver.mjs');
+const { focusEditor, openFromExplorer, openWorkbench, PATIENCE, pause } = await import('../driver.mjs');
 const { followSuite, limited, playScenes, SETTINGS, Tally } = await import('../runner.mjs');
 const { DEMO, scenes } = await import('../scenes.mjs');
 const { HERE, installSecondHost } = await import('./install.mjs');
@@ -68,8 +68,11 @@ async function driven() {
     await openFromExplorer(page, 'sag-note.tex');
     await focusEditor(page);
     await page.keyboard.press('Control+s');
-    await pause(1500);
-    const same = readFileSync(path.join(folder, 'sag-note.tex'), 'utf8') === readFileSync(path.join(DEMO, 'sag-note.tex'), 'utf8');
+    const onDisk = () => readFileSync(path.join(folder, 'sag-note.tex'), 'utf8');
+    const wanted = readFileSync(path.join(DEMO, 'sag-note.tex'), 'utf8');
+    await page.locator('.tab.active.dirty').waitFor({ state: 'detached', timeout: PATIENCE });
+    for (let i = 0; i < 50 && onDisk() !== wanted; i += 1) await pause(200);
+    const same = onDisk() === wanted;
     if (same) tally.pass(name);
     else tally.fail(`${name}: the file differs after everything was undone`);
   } catch (error) {
@@ -86,8 +89,8 @@ async function restricted() {
   const { page, close } = await openWorkbench(browser, server.url);
   const name = 'the workspace is not trusted';
   try {
-    await limited(openFromExplorer(page, 'sag-note.tex'), 60_000, name);
-    await page.locator('.statusbar-item', { hasText: 'Restricted Mode' }).first().waitFor({ timeout: 20_000 });
+    await limited(openFromExplorer(page, 'sag-note.tex'), 3 * PATIENCE, name);
+    await page.locator('.statusbar-item', { hasText: 'Restricted Mode' }).first().waitFor({ timeout: PATIENCE });
     tally.pass(name);
     await playScenes(page, scenes, ['read the hover', 'page says the same', 'insert from it', 'wrong coefficient', 'every claim'], tally, 'restricted');
     const still = await page.locator('.statusbar-item', { hasText: 'Restricted Mode' }).first().isVisible();

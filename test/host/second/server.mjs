@@ -8,7 +8,7 @@ import { freePort } from '../../../src/start/workbench.mjs';
 import { NODE, SERVER } from './install.mjs';
 
 const ENTRY = path.join(SERVER, 'out/node/entry.js');
-const START_LIMIT_MS = 60_000;
+const START_LIMIT_MS = 300_000;
 
 export const freshFolder = (name) => mkdtempSync(path.join(tmpdir(), `leading-order-${name}-`));
 

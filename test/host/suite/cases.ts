@@ -1,7 +1,7 @@
 /** What the extension must do in every host. Results come from the engine; the values are textbook expansions. */
 import * as vscode from 'vscode';
 import type { Api } from '../../../src/editor/activate.ts';
-import { check, fix, fixes, hoverText, open, same, select, until, wait } from './tools.ts';
+import { check, closeActive, closePage, closeText, fix, fixes, hoverText, isNotebookTab, isOpen, isPageTab, median, open, same, select, slowness, until, wait } from './tools.ts';
 
 const ID = 'leading-order.leading-order';
 const LATEX = '% leading-order: small x\n\\[ \\frac{\\sin x}{x} \\]\n';
@@ -18,7 +18,8 @@ export const cases: Readonly<Record<string, () => Promise<void>>> = {
   'activates quickly and registers its commands': async () => {
     const { activation } = await api();
     console.log(`activation ${activation.toFixed(1)} ms`);
-    check(activation < 150, `activation took ${activation} ms; five times the aim of 30 ms is the limit`);
+    const limit = 5 * 30 * (await slowness());
+    check(activation < limit, `activation took ${activation} ms; five times the aim of 30 ms, on this machine ${limit.toFixed(0)} ms, is the limit`);
     const known = await vscode.commands.getCommands(true);
     same(
       COMMANDS.filter((name) => !known.includes(`leadingOrder.${name}`)),
@@ -61,7 +62,8 @@ export const cases: Readonly<Record<string, () => Promise<void>>> = {
 
   'no hover on plain arithmetic in code': async () => {
     const editor = await open('c', 'int next(int i) { return i + 1; }\n');
-    await wait(200);
+    // Asked by the user for the same place the engine has answered; the hover stays away all the same.
+    await fixes(editor.document, new vscode.Range(0, 26, 0, 31));
     const text = await hoverText(editor.document, new vscode.Position(0, 26));
     check(!text.includes('leadingOrder'), `there is a hover: ${text.slice(0, 200)}`);
   },
@@ -111,8 +113,8 @@ export const cases: Readonly<Record<string, () => Promise<void>>> = {
   'an action whose text has moved on edits nothing': async () => {
     const editor = await open('latex', LATEX);
     const range = select(editor, '\\frac{\\sin x}{x}');
-    const unresolved = (await fixes(editor.document, range, 0)).find((action) => action.title.includes('after'));
-    check(unresolved && !unresolved.edit, 'an action is offered with its edit already in it');
+    const unresolved = await until('the action', async () => (await fixes(editor.document, range, 0)).find((action) => action.title.includes('after')));
+    check(!unresolved.edit, 'an action is offered with its edit already in it');
     const before = await fix(editor.document, range, 'after');
     check(before.edit, 'no edit');
     await editor.edit((builder) => builder.insert(new vscode.Position(0, 0), '% moved\n'));
@@ -141,18 +143,41 @@ export const cases: Readonly<Record<string, () => Promise<void>>> = {
 
   'notes complete their words': async () => {
     const editor = await open('latex', '% leading-order: \n\\[ \\frac{\\sin \\theta}{\\theta} \\]\n');
-    const list = await vscode.commands.executeCommand<vscode.CompletionList>('vscode.executeCompletionItemProvider', editor.document.uri, new vscode.Position(0, 17), ' ');
-    const labels = list.items.map((item) => (typeof item.label === 'string' ? item.label : item.label.label));
-    check(labels.includes('small \\theta'), `offered: ${labels.join(', ')}`);
+    await until('the quantity of the formula among the completions', async () => {
+      const list = await vscode.commands.executeCommand<vscode.CompletionList>('vscode.executeCompletionItemProvider', editor.document.uri, new vscode.Position(0, 17), ' ');
+      return list.items.map((item) => (typeof item.label === 'string' ? item.label : item.label.label)).includes('small \\theta');
+    });
   },
 
   'the small quantity is remembered for the file and forgotten on command': async () => {
     const editor = await open('latex', '\\[ \\sqrt{1 + a b} \\]\n');
     const range = select(editor, '\\sqrt{1 + a b}');
-    const before = await fixes(editor.document, range);
-    check(before.some((action) => action.title.includes('Set the small quantity')), `offered: ${before.map((a) => a.title).join(' | ')}`);
+    await fix(editor.document, range, 'Set the small quantity');
+    // The answer is given as a user gives it: the first symbol, and zero.
+    const inHover = (wanted: string): Promise<string> =>
+      until(`a hover with ${wanted}`, async () => {
+        const text = await hoverText(editor.document, new vscode.Position(0, 10));
+        return text.includes(wanted) ? text : null;
+      });
+    const setting = vscode.commands.executeCommand('leadingOrder.setSmallQuantity');
+    let ended = false;
+    void setting.then(
+      () => (ended = true),
+      () => (ended = true),
+    );
+    await until('both questions to be answered', async () => {
+      await vscode.commands.executeCommand('workbench.action.acceptSelectedQuickOpenItem');
+      return ended;
+    });
+    await setting;
+    await vscode.window.showTextDocument(editor.document);
+    await inHover('remembered for this file');
     await vscode.commands.executeCommand('leadingOrder.forgetAnswers');
-    check(editor.document.getText().includes('a b'), 'the text changed');
+    select(editor, '\\sqrt{1 + a b}');
+    await fix(editor.document, range, 'Set the small quantity');
+    const after = await inHover('leadingOrder.setSmallQuantity');
+    check(!after.includes('remembered for this file'), `still remembered: ${after.slice(0, 300)}`);
+    same(editor.document.getText(), '\\[ \\sqrt{1 + a b} \\]\n', 'the text');
   },
 
   'Add Note Above states the question': async () => {
@@ -166,6 +191,7 @@ export const cases: Readonly<Record<string, () => Promise<void>>> = {
     const { endEngine } = await api();
     const editor = await open('latex', '% leading-order: small x\n\\[ \\frac{\\tan x}{x} \\]\n');
     const asking = hoverText(editor.document, new vscode.Position(1, 8));
+    await wait(0);
     endEngine();
     await asking;
     await until('a hover after the restart', async () => (await hoverText(editor.document, new vscode.Position(1, 8))).includes('x²/3'));
@@ -183,8 +209,8 @@ export const cases: Readonly<Record<string, () => Promise<void>>> = {
     select(editor, '\\frac{\\sin x}{x}');
     await vscode.commands.executeCommand('leadingOrder.expandHere');
     await vscode.commands.executeCommand('leadingOrder.openBeside');
-    await until('the editor tab', () => vscode.window.tabGroups.all.some((group) => group.tabs.some((tab) => tab.input instanceof vscode.TabInputWebview && tab.input.viewType.includes('leadingOrder.page'))));
-    await vscode.commands.executeCommand('workbench.action.closeActiveEditor');
+    await until('the editor tab', () => isOpen(isPageTab));
+    await closePage();
   },
 
   'a first hover comes soon, later ones at once': async () => {
@@ -196,11 +222,11 @@ export const cases: Readonly<Record<string, () => Promise<void>>> = {
       const text = await hoverText(editor.document, new vscode.Position(1, 8));
       return [performance.now() - began, text];
     };
+    const before = await slowness();
     const [cold, first] = await timed();
     await until('the expansion', async () => (await timed())[1].includes('data:image'));
     const warm: number[] = [];
     for (let i = 0; i < 20; i += 1) warm.push((await timed())[0]);
-    const median = warm.sort((a, b) => a - b)[10] ?? 0;
     // What a hover without any answer of ours takes, and one over an expression that was never asked about.
     const plain = (await open('latex', 'Words without mathematics.\n')).document;
     const bare: number[] = [];
@@ -212,12 +238,13 @@ export const cases: Readonly<Record<string, () => Promise<void>>> = {
       const other = await open('latex', `% leading-order: small x\n\\[ \\frac{\\cosh x - 1}{x^2 + ${i + 2}} \\]\n`);
       const since = performance.now();
       const text = await hoverText(other.document, new vscode.Position(1, 8));
-      fresh.push(text.includes('x²') ? performance.now() - since : Infinity);
+      fresh.push(text.includes('data:image') ? performance.now() - since : Infinity);
     }
-    const middle = (times: number[]): number => times.sort((a, b) => a - b)[Math.floor(times.length / 2)] ?? 0;
-    console.log(`hover: cold ${cold.toFixed(0)} ms (${first.includes('x²') ? 'complete' : 'still computing'}), again ${median.toFixed(1)} ms, of another expression ${middle(fresh).toFixed(0)} ms, the editor's own share ${middle(bare).toFixed(1)} ms`);
-    check(cold < 2500, `the first hover took ${cold} ms; five times the aim of 500 ms is the limit`);
-    check(median < 300, `later hovers took ${median} ms; five times the aim of 60 ms is the limit`);
+    const [again, own] = [median(warm), median(bare)];
+    const slow = Math.max(before, await slowness());
+    console.log(`hover: cold ${cold.toFixed(0)} ms (${first.includes('data:image') ? 'complete' : first.includes('x²') ? 'without its picture' : 'still computing'}), again ${again.toFixed(1)} ms, of another expression ${median(fresh).toFixed(0)} ms, the editor's own share ${own.toFixed(1)} ms, this machine ${slow.toFixed(1)} times slower than usual`);
+    check(cold < 5 * 500 * slow + own, `the first hover took ${cold} ms; five times the aim of 500 ms is the limit, here ${(2500 * slow).toFixed(0)} ms`);
+    check(again < 5 * 60 * slow + own, `later hovers took ${again} ms; five times the aim of 60 ms is the limit, here ${(300 * slow).toFixed(0)} ms`);
   },
 
   'a notebook cell is served like any document': async () => {
@@ -232,7 +259,7 @@ export const cases: Readonly<Record<string, () => Promise<void>>> = {
     check(action.edit, 'no edit');
     await vscode.workspace.applyEdit(action.edit);
     check(!document.getText().includes('sin'), `the cell is ${document.getText()}`);
-    await vscode.commands.executeCommand('workbench.action.revertAndCloseActiveEditor');
+    await closeActive(isNotebookTab);
   },
 
   'an inlay hint shows what is left out, when it is switched on': async () => {
@@ -258,9 +285,10 @@ export const cases: Readonly<Record<string, () => Promise<void>>> = {
 
   'a note in code links to the equation it implements': async () => {
     const editor = await open('c', '// leading-order: implements eq:length\ndouble f(double u) { return 1.0 + u*u/6.0; }\n');
-    const links = await vscode.commands.executeCommand<vscode.DocumentLink[]>('vscode.executeLinkProvider', editor.document.uri, 5);
-    const texts = links.map((link) => editor.document.getText(link.range));
-    check(texts.includes('eq:length'), `links: ${texts.join(', ')}`);
+    await until('the link', async () => {
+      const links = await vscode.commands.executeCommand<vscode.DocumentLink[]>('vscode.executeLinkProvider', editor.document.uri, 5);
+      return links.some((link) => editor.document.getText(link.range) === 'eq:length');
+    });
   },
 
   'a polynomial is held against the equation it implements': async () => {
@@ -315,7 +343,7 @@ export const cases: Readonly<Record<string, () => Promise<void>>> = {
       await vscode.window.showTextDocument(document);
       const problem = await until('a problem', () => vscode.languages.getDiagnostics(document.uri).find((d) => d.code === 'fails'));
       check(document.getText(problem.range).includes('5'), `underlined: ${document.getText(problem.range)}`);
-      await vscode.commands.executeCommand('workbench.action.closeActiveEditor');
+      await closeText(document);
     } finally {
       for (const uri of [macros, main]) await vscode.workspace.fs.delete(uri).then(undefined, () => undefined);
     }
@@ -342,7 +370,7 @@ export const cases: Readonly<Record<string, () => Promise<void>>> = {
       await vscode.workspace.applyEdit(change);
       await edited.save();
       await until('one problem', () => failing() === 1);
-      await vscode.commands.executeCommand('workbench.action.closeActiveEditor');
+      await closeText(document);
     } finally {
       for (const uri of [macros, main]) await vscode.workspace.fs.delete(uri).then(undefined, () => undefined);
     }
@@ -360,7 +388,7 @@ export const cases: Readonly<Record<string, () => Promise<void>>> = {
     await vscode.commands.executeCommand('leadingOrder.testHarness');
     const harness = await until('the program', () => vscode.window.visibleTextEditors.find((e) => e.document.languageId === 'c' && e.document.getText().includes('nextafterf')));
     check(/reference\(long double x\) \{ return sinl\(x\); \}/.test(harness.document.getText()), harness.document.getText());
-    await vscode.commands.executeCommand('workbench.action.revertAndCloseActiveEditor');
+    await closeText(harness.document);
   },
 
   'Copy as Author Query copies place, printed and right': async () => {
@@ -374,7 +402,8 @@ export const cases: Readonly<Record<string, () => Promise<void>>> = {
   'Check Workspace reports every claim of every file': async () => {
     const report = await vscode.commands.executeCommand<string | null>('leadingOrder.checkWorkspace');
     check(typeof report === 'string' && /sag-note\.tex/.test(report) && /fails/.test(report), String(report).slice(0, 500));
-    await vscode.commands.executeCommand('workbench.action.revertAndCloseActiveEditor');
+    const shown = await until('the report', () => vscode.workspace.textDocuments.find((document) => document.getText() === `${report}\n`));
+    await closeText(shown);
   },
 
   'several fixes of one document are made in one edit': async () => {
@@ -422,28 +451,33 @@ export const cases: Readonly<Record<string, () => Promise<void>>> = {
     const line = (i: number): string => (i % 5 === 0 ? `\\[ \\sin x = x - \\frac{x^3}{6} + O(x^5) \\] % ${i}` : `Words of line ${i}.`);
     const body = Array.from({ length: 5000 }, (_, i) => line(i)).join('\n');
     const configuration = vscode.workspace.getConfiguration('leadingOrder');
-    const medianOf = async (language: string, begins: number): Promise<number> => {
-      const editor = await open(language, body);
-      await wait(begins);
+    const medianOf = async (language: string, begun: () => boolean): Promise<number> => {
+      const { document } = await open(language, body);
+      await until('the engine to be where it is wanted', begun);
+      // Colouring goes on for a while after a file is opened.
+      await wait(800);
+      const editor = await vscode.window.showTextDocument(document);
       const times: number[] = [];
       for (let i = 0; i < 11; i += 1) {
         const began = performance.now();
         await editor.edit((builder) => builder.insert(new vscode.Position(i, 0), 'a'), { undoStopBefore: false, undoStopAfter: false });
         times.push(performance.now() - began);
       }
-      await vscode.commands.executeCommand('workbench.action.revertAndCloseActiveEditor');
+      await closeText(document);
       console.log(`typing, ${language}: ${times.map((time) => time.toFixed(0)).join(' ')}`);
-      return times.sort((a, b) => a - b)[5] ?? 0;
+      return median(times);
     };
     // The editor colours LaTeX at every edit, with or without an extension: the same document with the checks off is the measure.
-    const plain = await medianOf('plaintext', 1200);
+    const { engineBusy } = await api();
+    const idle = (): boolean => !engineBusy();
+    const plain = await medianOf('plaintext', idle);
     await configuration.update('check', 'command', vscode.ConfigurationTarget.Global);
-    const without = await medianOf('latex', 1200);
+    const without = await medianOf('latex', idle);
     await configuration.update('check', undefined, vscode.ConfigurationTarget.Global);
-    // By then the check of the opened document is under way.
-    const withChecks = await medianOf('latex', 1200);
+    const withChecks = await medianOf('latex', engineBusy);
+    const slow = await slowness();
     console.log(`typing in 5000 lines: median ${withChecks.toFixed(1)} ms, with the checks off ${without.toFixed(1)} ms, as plain text ${plain.toFixed(1)} ms`);
     // On a machine busy with other work the plain document is slow in some rounds, too.
-    check(withChecks < 2 * Math.max(without, plain) + 50, `an edit took ${withChecks.toFixed(1)} ms; with the checks off ${without.toFixed(1)} ms`);
+    check(withChecks < 2 * Math.max(without, plain) + 50 * slow, `an edit took ${withChecks.toFixed(1)} ms; with the checks off ${without.toFixed(1)} ms`);
   },
 };

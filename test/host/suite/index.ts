@@ -1,8 +1,10 @@
 /** The suite that runs inside an extension host: the web workbench's, a remote one, the desktop's. It sees only the editor's interface. */
 import * as vscode from 'vscode';
 import { cases } from './cases.ts';
+import { PATIENCE_MS } from './tools.ts';
 
-const LIMIT_MS = 60_000;
+/** Longer than any one state is waited for. */
+const LIMIT_MS = PATIENCE_MS + 20_000;
 
 export async function run(): Promise<void> {
   console.log(`host: ${vscode.env.appName} ${vscode.version} (${vscode.env.appHost})`);

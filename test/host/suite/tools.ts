@@ -9,8 +9,11 @@ export function same<T>(actual: T, expected: T, what: string): void {
   if (a !== e) throw new Error(`${what}: ${a}, expected ${e}`);
 }
 
-export async function until<T>(what: string, look: () => T | Promise<T>, patience = 20_000): Promise<NonNullable<T>> {
-  const end = Date.now() + patience;
+/** States are waited for as long as a machine ten times slower than usual takes; on a usual one nothing comes near. */
+export const PATIENCE_MS = 200_000;
+
+export async function until<T>(what: string, look: () => T | Promise<T>): Promise<NonNullable<T>> {
+  const end = Date.now() + PATIENCE_MS;
   for (;;) {
     const seen = await look();
     if (seen) return seen;
@@ -19,16 +22,41 @@ export async function until<T>(what: string, look: () => T | Promise<T>, patienc
   }
 }
 
-/** A closing that the case before asked for can still be under way and take the new document with it: then it is opened again. */
+/** What the editor says of the document at once need not be there yet for its commands: waits until its tab is the active one, too. */
 export async function open(language: string, content: string): Promise<vscode.TextEditor> {
-  for (let tries = 1; ; tries += 1) {
-    const document = await vscode.workspace.openTextDocument({ language, content });
+  const document = await vscode.workspace.openTextDocument({ language, content });
+  return until('the document in an editor of its own', async () => {
     const editor = await vscode.window.showTextDocument(document);
-    await new Promise((resolve) => setTimeout(resolve, 30 * tries));
-    if (!document.isClosed && document.getText() === content) return editor;
-    check(tries < 5, 'the document does not stay open');
-  }
+    return activeTab(isTextTab(document.uri)) && vscode.window.activeTextEditor === editor && document.getText() === content ? editor : null;
+  });
 }
+
+type TabTest = (tab: vscode.Tab) => boolean;
+const isTextTab =
+  (uri: vscode.Uri): TabTest =>
+  ({ input }) =>
+    input instanceof vscode.TabInputText && input.uri.toString() === uri.toString();
+export const isNotebookTab: TabTest = ({ input }) => input instanceof vscode.TabInputNotebook;
+export const isPageTab: TabTest = ({ input }) => input instanceof vscode.TabInputWebview && input.viewType.includes('leadingOrder.page');
+
+const activeTab = (wanted: TabTest): boolean => {
+  const tab = vscode.window.tabGroups.activeTabGroup.activeTab;
+  return tab !== undefined && wanted(tab);
+};
+export const isOpen = (wanted: TabTest): boolean => vscode.window.tabGroups.all.some((group) => group.tabs.some(wanted));
+
+/** Closes the active editor, without saving, once it is the one that is meant, and waits until it is gone: a closing that comes late takes the next case's document. */
+export async function closeActive(wanted: TabTest): Promise<void> {
+  await until('the editor that is to be closed', () => activeTab(wanted));
+  await vscode.commands.executeCommand('workbench.action.revertAndCloseActiveEditor');
+  await until('the closing of the editor', () => !isOpen(wanted));
+}
+/** The page stands beside the text, which keeps the focus. */
+export async function closePage(): Promise<void> {
+  await vscode.window.tabGroups.close(vscode.window.tabGroups.all.flatMap((group) => group.tabs.filter(isPageTab)));
+  await until('the closing of the page', () => !isOpen(isPageTab));
+}
+export const closeText = (document: vscode.TextDocument): Promise<void> => closeActive(isTextTab(document.uri));
 
 /** Selects the first occurrence of `text`. */
 export function select(editor: vscode.TextEditor, text: string): vscode.Range {
@@ -49,11 +77,33 @@ export async function fixes(document: vscode.TextDocument, range: vscode.Range, 
   return vscode.commands.executeCommand<vscode.CodeAction[]>('vscode.executeCodeActionProvider', document.uri, range, undefined, resolve);
 }
 
+/** The quick fix once it is offered. */
 export async function fix(document: vscode.TextDocument, range: vscode.Range, title: string): Promise<vscode.CodeAction> {
-  const actions = await fixes(document, range);
-  const found = actions.find((action) => action.title.includes(title));
-  check(found, `no quick fix "${title}"; offered: ${actions.map((action) => action.title).join(' | ') || 'none'}`);
-  return found;
+  let offered: readonly vscode.CodeAction[] = [];
+  try {
+    return await until('the quick fix', async () => {
+      offered = await fixes(document, range);
+      return offered.find((action) => action.title.includes(title));
+    });
+  } catch {
+    throw new Error(`no quick fix "${title}"; offered: ${offered.map((action) => action.title).join(' | ') || 'none'}`);
+  }
 }
 
 export const wait = (ms: number): Promise<void> => new Promise((resolve) => setTimeout(resolve, ms));
+
+/** What the loop below takes on the machine that the aims were set on. */
+const USUAL_LOOP_MS = 60;
+/** How many times slower than usual this machine is now, at least 1: the processor's share in a fixed loop and the way through the event loop. */
+export async function slowness(): Promise<number> {
+  const began = performance.now();
+  let sum = 0;
+  for (let round = 0; round < 10; round += 1) {
+    for (let i = 1; i < 400_000; i += 1) sum += Math.sqrt(i) / (sum + i);
+    await wait(0);
+  }
+  check(Number.isFinite(sum), 'the loop has no value');
+  return Math.max(1, (performance.now() - began) / USUAL_LOOP_MS);
+}
+
+export const median = (times: readonly number[]): number => [...times].sort((a, b) => a - b)[Math.floor(times.length / 2)] ?? 0;

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { processorTime } from '../clock.ts';
+import { processorTime } from '../setup.ts';
 import { CASES } from './cases.ts';
 import { has } from '../exhaustive/compile.ts';
 import { emittedSpeeds } from './emitted.ts';

@@ -1,7 +1,7 @@
 /** Documents: LaTeX, Markdown, code comments. Delimiters and environments: LaTeX2e and amsmath user's guides; Markdown mathematics as GitHub documents it (from memory). */
 import { describe, expect, it } from 'vitest';
 import { documentStyle, findComments, languageOf, readDocument, readFormula } from '../../src/read/index.ts';
-import { processorTime } from '../clock.ts';
+import { processorTime } from '../setup.ts';
 import { shown } from './shown.ts';
 
 const summary = (text: string, language: string): string[] =>

@@ -1,7 +1,7 @@
 /** Readings of LaTeX as authors write it. Notation and traps: from public documents, collected for this project; the meaning of each is common practice unless a source is named. */
 import { describe, expect, it } from 'vitest';
 import { collectMacros, readFormula, readLatex, type ReadOptions } from '../../src/read/index.ts';
-import { processorTime } from '../clock.ts';
+import { processorTime } from '../setup.ts';
 import { shown } from './shown.ts';
 
 const reading = (text: string, options: ReadOptions = {}): string => {

@@ -1,5 +1,11 @@
-// Set up before every unit test file. A busy or slow machine must not decide a test: what the engine takes for the time (its budgets) is
-// a quarter of the processor time that the process of the tests has used, not the wall clock. Tests about speed use `processorTime`.
+/**
+ * Set up before every unit test file, so that neither a busy machine nor chance decides a test.
+ * What the engine takes for the time (its budgets) is a quarter of the processor time that the process of the tests has used, not the wall clock; tests about speed
+ * use `processorTime`. Random cases come from one seed, others by LEADING_ORDER_SEED.
+ */
+import fc from 'fast-check';
+
+fc.configureGlobal({ seed: Number(process.env.LEADING_ORDER_SEED ?? 20261201) });
 
 const PATIENCE = 4;
 /** The processor is asked at most once in this many milliseconds of the wall clock: asking costs a system call. */

@@ -4,7 +4,10 @@
  * erfc for x > 0 (7.12(i)), E_p for p, x > 0 (8.20(i), 6.12(i)), Gamma(a, x) from n >= a - 1 on (8.11(i)), K_nu for x > 0 from l >= |nu| - 1/2 on (10.40(ii)), Ai for x > 0 (9.7(iii)),
  * the two series of J and Y from l >= nu/2 - 1/4 and nu/2 - 3/4 on, l >= 1 (10.17(iii)), the auxiliary functions f and g of Si, Ci (6.12(ii)) and of the Fresnel integrals (7.12(ii)).
  * Of either sign: Ei for x > 0, 1 + chi(n+1) times the next term (6.12(i)); I_nu for x > 0, 2 chi(l) exp(|nu^2 - 1/4| chi(1)/x) times it (10.40(iii) on ph z = pi, from memory),
- * with chi(n) < sqrt(pi (n+1)/2) (9.7(i) and the quotient of Gamma functions half a unit apart).
+ * the series of 2x F(x), F Dawson's integral, sqrt(e (n + 3/2)) times it: F = x/(2 sqrt pi) PV int_0^inf e^-u u^(-1/2)/(x^2 - u) du leaves int e^-u u^(n-1/2)/(x^2 - u) du, of which the principal value is
+ * the mean over the rays at +-theta, where |x^2 - u| >= x^2 sin theta; tan^2 theta = 1/(n + 1/2). The series of log G(z+1) that DLMF 5.17.5 ends with is int_0^inf (t/(e^t - 1) - ...) e^(-zt)/t^3 dt and thus enveloping
+ * (Ferreira & Lopez, J. Approx. Theory 109 (2001)).
+ * Here chi(n) < sqrt(pi (n+1)/2) (9.7(i) and the quotient of Gamma functions half a unit apart).
  */
 import { type Expression, Q, type Rational, rationalOf } from '../expression/index.ts';
 import { type Model, type ModelArithmetic, real } from '../rigorous/index.ts';
@@ -84,6 +87,14 @@ function envelopeOf(id: EnvelopeName, args: readonly Expression[]): Envelope | n
       const odd = (k: number): Rational => grow(list, k, (c, j) => Q.multiply(c, Q.rational(2 * j - 1)));
       return { power: Q.rational(2), factor: Q.ONE, scale: 'pi', from: 1 + parity, coefficient: (k) => (k % 2 !== parity ? Q.ZERO : Math.floor(k / 2) % 2 === 0 ? odd(k) : Q.negate(odd(k))) };
     }
+    case 'enveloping Dawson': {
+      // sum (2k-1)!!/(2x^2)^k.
+      const list: Rational[] = [Q.ONE];
+      return { from: 1, power: Q.rational(2), factor: Q.ONE, coefficient: (k) => grow(list, k, (c, j) => Q.multiply(c, Q.rational(2 * j - 1, 2))), either: (k) => 1.65 * Math.sqrt(k + 1.5) };
+    }
+    case 'enveloping Barnes G':
+      // sum B_(2k+2)/(2k(2k+1)(2k+2) z^(2k)), k >= 1.
+      return { ...plain, from: 1, coefficient: (k) => (k === 0 || k % 2 === 1 ? Q.ZERO : Q.divide(real.bernoulliNumber(k + 2), Q.rational(k * (k + 1) * (k + 2)))) };
     case 'enveloping erfc': {
       const list: Rational[] = [Q.ONE];
       return { from: 1, power: Q.rational(2), factor: Q.ONE, coefficient: (k) => grow(list, k, (c, j) => Q.negate(Q.multiply(c, Q.rational(2 * j - 1, 2)))) };

@@ -8,6 +8,8 @@ import type { Numbers } from './numbers.ts';
 import { isExactlyZero, normalForm, type Segment } from './region.ts';
 import { besselSeriesModel } from './besselAtZero.ts';
 import { envelopeModel } from './enveloping.ts';
+import { kelvinSeriesModel } from './kelvinAtZero.ts';
+import { lambertBranchModel } from './lambertBranch.ts';
 import { rewriteCall } from './rewrite.ts';
 import { specialModel } from './special.ts';
 
@@ -42,7 +44,7 @@ export function modelOf<T>(e: Expression, n: Numbers<T>, m: ModelArithmetic<T>, 
 export function logModelOf<T>(e: Expression, n: Numbers<T>, m: ModelArithmetic<T>, variable: string, leaf: Model<T>, vanishes?: (e: Expression) => boolean, check?: () => void): LogModel<T> | null {
   const environment = new Map([...parameterModels(n, m), [variable, leaf] as const]);
   if (environment.size > PARAMETER_LIMIT) return null;
-  return logModelOfTree(e, { m, trees: n.trees, real: n.r, describe, environment, vanishes, check, call: (id, args, models, isConstant) => envelopeModel(id, args, models, n, m) ?? besselSeriesModel(id, args, models, n, m) ?? specialModel(id, args, models, n, m, isConstant), rewrite: (id, args, models) => rewriteCall(id, args, models, n, m), simplify: (tree) => (n.r.isPositive(leaf.range) ? normalForm(tree, variable, '>') : n.r.isNegative(leaf.range) ? normalForm(tree, variable, '<') : tree) });
+  return logModelOfTree(e, { m, trees: n.trees, real: n.r, describe, environment, vanishes, check, call: (id, args, models, isConstant) => envelopeModel(id, args, models, n, m) ?? besselSeriesModel(id, args, models, n, m) ?? kelvinSeriesModel(id, args, models, n, m) ?? lambertBranchModel(id, models, n, m) ?? specialModel(id, args, models, n, m, isConstant), rewrite: (id, args, models) => rewriteCall(id, args, models, n, m), simplify: (tree) => (n.r.isPositive(leaf.range) ? normalForm(tree, variable, '>') : n.r.isNegative(leaf.range) ? normalForm(tree, variable, '<') : tree) });
 }
 
 /** Nothing but powers of t and of its logarithm. */
@@ -106,8 +108,7 @@ export function localModel<T>(segment: Segment, n: Numbers<T>, variable: string,
   if (domain === null) return null;
   const infinite = domain.leaf.valuation < 0;
   const place = infinite ? null : segment.local === 'lower' ? segment.lower : segment.upper;
-  const centre = place && n.value(place);
-  const vanishes = place && !(centre && r.isZero(centre) && r.isPoint(centre)) ? (e: Expression): boolean => isExactlyZero(substitute(e, variable, place), []) : infinite ? (e: Expression): boolean => vanishesAtInfinity(e, variable, domain.sign) : undefined;
+  const vanishes = place ? (e: Expression): boolean => isExactlyZero(substitute(e, variable, place), []) : infinite ? (e: Expression): boolean => vanishesAtInfinity(e, variable, domain.sign) : undefined;
   const f = logModelOf(segment.expansion.function, n, domain.m, variable, domain.leaf, vanishes, check);
   return f && { ...domain, f };
 }
@@ -142,7 +143,9 @@ export function remainderAtPoint<T>(local: Local<T>, expansion: Expansion, n: Nu
     const atFirst = expected.get(first)?.[j];
     if (atFirst !== undefined && valuation === first) {
       if (kept.length === 0 && !nothing) return null;
-      kept[0] = r.subtract(kept[0] ?? r.zero, atFirst);
+      const left = r.subtract(kept[0] ?? r.zero, atFirst);
+      // Above the remainder's power of the logarithm the terms are the coefficients too.
+      kept[0] = j > expansion.remainder.log && r.containsZero(left) ? r.zero : left;
     } else if (atFirst !== undefined) kept.unshift(r.negate(atFirst), ...Array.from({ length: valuation - first - 1 }, () => r.zero));
     const from = atFirst !== undefined ? first : valuation;
     const polynomial = m.polynomial(kept, from);

@@ -348,7 +348,7 @@ function atPoint<T>(segment: Segment, n: Numbers<T>, problem: SharpProblem, vari
   if (base === null || !isPowerSum(segment.expansion)) return null;
   const count = Math.max(2, segment.expansion.terms.length);
   let settledLower = lower;
-  for (let cut = 0; cut < 24; cut += 1) {
+  cuts: for (let cut = 0; cut < 24; cut += 1) {
     const part = cutSegment(segment, cut);
     for (const factor of [1, 2, 3]) {
       const q = base * factor;
@@ -363,10 +363,13 @@ function atPoint<T>(segment: Segment, n: Numbers<T>, problem: SharpProblem, vari
           continue;
         }
         if (rest.length > 1 || (problem.measure === 'relative' && local.f.length > 1)) {
+          if (problem.measure === 'absolute' && growsAtPoint(r, rest)) {
+            return { kind: 'unbounded', place: pointExpression(segment), steps: ['The leading term of f - sum at the point of expansion is unbounded: the sum does not contain every term that is.'] };
+          }
           const coarse = withLogarithms(r, rest, local.f, problem.measure);
           if (coarse === null) break;
           // Enough where it is below what is known from elsewhere; else the part is made smaller.
-          if (cut < 20 && r.isPositive(r.subtract(coarse, settledLower))) break;
+          if (cut < 20 && r.isPositive(r.subtract(coarse, settledLower))) continue cuts;
           return {
             kind: 'bounded',
             upper: coarse,
@@ -408,6 +411,15 @@ function atPoint<T>(segment: Segment, n: Numbers<T>, problem: SharpProblem, vari
     }
   }
   return null;
+}
+
+/** Whether the leading term s^k (log s)^j has k < 0, or k = 0 < j, and a coefficient that is not zero. */
+function growsAtPoint<T>(r: Numbers<T>['r'], rest: LogModel<T>): boolean {
+  const parts = rest.map((g, j) => ({ g, j })).filter(({ g }) => g.coefficients.length > 0 || !r.isZero(g.tail));
+  const least = Math.min(...parts.map(({ g }) => g.valuation));
+  const [first] = parts.filter(({ g }) => g.valuation === least).sort((a, b) => b.j - a.j);
+  const lead = first?.g.coefficients[0];
+  return first !== undefined && lead !== undefined && !r.containsZero(lead) && (least < 0 || (least === 0 && first.j > 0));
 }
 
 /** An upper bound of |f - sum| (or of its ratio to f) over s in (0, 1] from the components of powers of log s. */

@@ -1,19 +1,19 @@
 /** Exact identities that bring a special function to a place where it can be modelled: away from poles, its logarithm in the open, or its asymptotic series with a proven remainder. */
 import { build, type Expression, Q } from '../expression/index.ts';
 import type { Model, ModelArithmetic } from '../rigorous/index.ts';
-import { besselAtZero } from './besselAtZero.ts';
+import { lambertAtBranch } from './lambertBranch.ts';
+import { nearZero } from './nearZero.ts';
 import type { Numbers } from './numbers.ts';
 
 const { call, constant, difference, negation, number, power, product, quotient, squareRoot, sum } = build;
 const log = (e: Expression): Expression => call('log', e);
 const exp = (e: Expression): Expression => call('exp', e);
-const gammaConstant = constant('eulerGamma');
 const MOST_STEPS = 60;
 
 /** Names of series that only bound/ knows: formal series at infinity whose remainder lies between zero and the first term left out. */
 export const ENVELOPES = [
   'enveloping log gamma', 'enveloping digamma', 'enveloping polygamma', 'enveloping erfc', 'enveloping exponential integral', 'enveloping incomplete gamma', 'enveloping Ei', 'enveloping Bessel K', 'enveloping Bessel I',
-  'enveloping Bessel P', 'enveloping Bessel Q', 'enveloping Airy', 'enveloping sine integral f', 'enveloping sine integral g', 'enveloping Fresnel f', 'enveloping Fresnel g',
+  'enveloping Bessel P', 'enveloping Bessel Q', 'enveloping Airy', 'enveloping sine integral f', 'enveloping sine integral g', 'enveloping Fresnel f', 'enveloping Fresnel g', 'enveloping Dawson', 'enveloping Barnes G',
 ] as const;
 export type EnvelopeName = (typeof ENVELOPES)[number];
 
@@ -27,6 +27,12 @@ export function rewriteCall<T>(id: string, args: readonly Expression[], models: 
   if (u.valuation > 0) {
     const small = nearZero(id, args, x, r.isPositive(u.range) ? 1 : r.isNegative(u.range) ? -1 : 0);
     if (small !== null) return small;
+  }
+  if (id === 'lambertW') return lambertAtBranch(args, u, n);
+  if (id === 'barnesG') {
+    // G(z+1) = Gamma(z) G(z) (DLMF 5.17.1) until the logarithm is real.
+    if (r.isPositive(u.range) && u.valuation === 0) return exp(call('logBarnesG', x));
+    return u.valuation >= 0 && r.toDouble(r.lowerEnd(m.rangeOf(u) ?? r.zero)) > -MOST_STEPS ? quotient(call('barnesG', sum(x, number(1))), call('gamma', x)) : null;
   }
   if (!['gamma', 'logGamma', 'digamma', 'polygamma'].includes(id)) return null;
   const range = m.rangeOf(u);
@@ -59,54 +65,6 @@ function shifted(id: string, args: readonly Expression[], x: Expression, steps: 
       const weight = number(degree % 2 === 0 ? -factorial : factorial);
       return sum(call('polygamma', order, moved), ...factors.map((factor) => quotient(weight, power(factor, degree + 1))));
     }
-  }
-}
-
-/** Logarithms taken out at zero (DLMF 6.2.4, 6.2.13, 6.2.16; 6.6). */
-function nearZero(id: string, args: readonly Expression[], x: Expression, sign: number): Expression | null {
-  const ownLog = sign > 0 ? log(x) : sign < 0 ? log(negation(x)) : null;
-  switch (id) {
-    case 'expIntegralEi':
-      return ownLog && difference(sum(gammaConstant, ownLog), call('ein', negation(x)));
-    case 'cosIntegral':
-      return sign > 0 && ownLog ? difference(sum(gammaConstant, ownLog), call('cin', x)) : null;
-    case 'struveH':
-    case 'struveL': {
-      // DLMF 11.2.1, 11.2.2.
-      const [order] = args;
-      if (order?.kind !== 'number') return null;
-      const raised = number(Q.add(order.value, Q.rational(3, 2)));
-      const square = quotient(power(x, 2), number(4));
-      const series = call('hypergeometric', number(1), number(2), number(1), number({ num: 3n, den: 2n }), raised, id === 'struveH' ? negation(square) : square);
-      return quotient(product(power(quotient(x, number(2)), Q.add(order.value, Q.ONE)), series), product(call('gamma', number({ num: 3n, den: 2n })), call('gamma', raised)));
-    }
-    case 'dawson':
-      // DLMF 7.5.1 with 7.11.4 and 13.2.39.
-      return product(x, call('hypergeometric', number(1), number(1), number(1), number({ num: 3n, den: 2n }), negation(power(x, 2))));
-    case 'ellipticKParameter':
-    case 'ellipticEParameter': {
-      // DLMF 19.5.1, 19.5.2.
-      const half = number({ num: 1n, den: 2n });
-      return product(quotient(constant('pi'), number(2)), call('hypergeometric', number(2), number(1), id === 'ellipticKParameter' ? half : negation(half), half, number(1), x));
-    }
-    case 'coshIntegral':
-      return sign > 0 && ownLog ? difference(sum(gammaConstant, ownLog), quotient(sum(call('ein', x), call('ein', negation(x))), number(2))) : null;
-    case 'expIntegralE': {
-      const [order] = args;
-      if (order?.kind !== 'number' || !Q.isInteger(order.value) || sign <= 0 || !ownLog) return null;
-      const k = Number(order.value.num);
-      if (k === 1) return sum(negation(gammaConstant), negation(ownLog), call('ein', x));
-      // E_k(x) = (e^-x - x E_(k-1)(x))/(k-1) (DLMF 8.19.12).
-      return k > 1 && k < 30 ? quotient(difference(exp(negation(x)), product(x, call('expIntegralE', number(k - 1), x))), number(k - 1)) : null;
-    }
-    case 'besselJ':
-    case 'besselI':
-      return besselAtZero(id, args, x);
-    case 'besselY':
-    case 'besselK':
-      return sign > 0 ? besselAtZero(id, args, x) : null;
-    default:
-      return null;
   }
 }
 
@@ -147,6 +105,37 @@ function atInfinity(id: string, args: readonly Expression[], x: Expression, sign
       if (sign <= 0) return null;
       const zeta = product(number({ num: 2n, den: 3n }), power(x, { num: 3n, den: 2n }));
       return product(quotient(exp(zeta), product(squareRoot(constant('pi')), power(x, { num: 1n, den: 4n }))), call('enveloping Bessel I', number({ num: 1n, den: 3n }), zeta));
+    }
+    case 'dawson': {
+      const main = quotient(call('enveloping Dawson', sign > 0 ? x : negation(x)), product(number(2), x));
+      return sign === 0 ? null : main;
+    }
+    case 'erfi':
+      // DLMF 7.5.1.
+      return sign === 0 ? null : product(quotient(number(2), squareRoot(constant('pi'))), exp(power(x, 2)), call('dawson', x));
+    case 'sinhIntegral':
+    case 'coshIntegral': {
+      // (Ei(x) +- E_1(x))/2 (DLMF 6.5.3, 6.5.4), the growth taken out.
+      if (sign <= 0) return sign < 0 && id === 'sinhIntegral' ? negation(call(id, negation(x))) : null;
+      const small = product(exp(product(number(-2), x)), call('enveloping exponential integral', number(1), x));
+      return product(quotient(exp(x), product(number(2), x)), sum(call('enveloping Ei', x), id === 'sinhIntegral' ? small : negation(small)));
+    }
+    case 'lowerGamma':
+      return sign > 0 && args[0] ? difference(call('gamma', args[0]), call('upperGamma', args[0], x)) : null;
+    case 'barnesG':
+      return sign > 0 ? exp(call('logBarnesG', x)) : null;
+    case 'logBarnesG': {
+      // DLMF 5.17.5 with Stirling's series for log Gamma(z+1) put in, z = x - 1.
+      if (sign <= 0) return null;
+      const z = difference(x, number(1));
+      const logGamma = sum(product(sum(z, half), log(z)), negation(z), quotient(log(product(number(2), constant('pi'))), number(2)));
+      return sum(
+        quotient(power(z, 2), number(4)),
+        product(z, sum(logGamma, call('enveloping log gamma', z))),
+        negation(product(sum(quotient(product(z, sum(z, number(1))), number(2)), number({ num: 1n, den: 12n })), log(z))),
+        negation(log(constant('glaisher'))),
+        call('enveloping Barnes G', z),
+      );
     }
     case 'erfc':
       // DLMF 7.12.1.

@@ -7,10 +7,14 @@
 import { build, type Expression, structureKey } from '../expression/index.ts';
 import { describe } from '../functions/index.ts';
 import { type Ball, complex, type ComplexBall, enclose, interval, type Model, type ModelArithmetic, real } from '../rigorous/index.ts';
+import { type CircleSeries, circleSeries } from './circleSeries.ts';
 import { polygammaSeries } from './gammaSeries.ts';
 import { equationSeries, hasEquation, hypergeometricAtZero, polylogAtZero, type RealSeries } from './holonomic.ts';
+import { hornerWithTail, withoutConstant } from './horner.ts';
+import { isJacobi, jacobiSeries } from './jacobi.ts';
 import { hasRecurrence, recurrenceSeries } from './nonlinear.ts';
 import type { Numbers } from './numbers.ts';
+import { thirdKindSeries } from './thirdKind.ts';
 import { zetaSeries } from './zetaSeries.ts';
 
 /** Where f is analytic in its varying argument: everywhere, off (-inf, end], or off [end, inf). */
@@ -72,16 +76,6 @@ function domainOf(id: string, args: readonly Expression[], index: number): Domai
   }
 }
 
-interface Series {
-  readonly radius: number;
-  readonly coefficients: readonly Ball[];
-  /** max |f| on the circle of that radius. */
-  readonly bound: Ball;
-}
-
-const cache = new Map<string, Series | null>();
-const CACHE_SIZE = 256;
-
 /** Room between u0 and the nearest singularity that the list allows, as a double rounded down. */
 function roomOf(domain: Domain, centre: number): number {
   switch (domain.kind) {
@@ -109,6 +103,8 @@ export function specialModel<T>(id: string, args: readonly Expression[], models:
   }
   const u = m.regular(argument);
   if (u === null) return null;
+  const byNeighbours = neighbourModel(id, args, index, u, n, m);
+  if (byNeighbours !== null) return byNeighbours;
   const byEquation = equationModel(id, args, index, argument, u, n, m);
   if (byEquation !== null) return byEquation;
   const byRecurrence = id === 'zeta' ? zetaModel(u, n, m) : hasRecurrence(id) && index === args.length - 1 ? recurrenceModel(id, args, u, n, m) : null;
@@ -144,7 +140,7 @@ export function specialModel<T>(id: string, args: readonly Expression[], models:
     const wanted = 2 ** Math.ceil(Math.log2(Math.max(factor * D, 0.25)));
     const radius = Math.min(domain.kind === 'entire' ? wanted : Math.max(factor * D, Math.min(0.5 * room, 4)), 0.97 * room);
     if (!(radius > 1.1 * D)) continue;
-    const series = seriesOf(id, parameters, index, ball, radius, precision, m.length);
+    const series = circleSeries(id, parameters, index, ball, radius, precision, m.length);
     if (series === null) continue;
     return composed(series, offset, D, n, m);
   }
@@ -209,13 +205,24 @@ function recurrenceModel<T>(id: string, args: readonly Expression[], u: Model<T>
   return series ? hornerWithTail(series.coefficients.map((c) => n.fromBall(c)), n.fromBall(series.remainder), offset, n, m) : null;
 }
 
-function withoutConstant<T>(m: ModelArithmetic<T>, u: Model<T>): Model<T> {
-  const rest = m.polynomial([m.a.zero, ...u.coefficients.slice(1)]);
-  return m.a.isZero(u.tail) ? rest : m.add(rest, { valuation: u.coefficients.length, coefficients: [], tail: u.tail, range: u.tail });
+/** By equations that tie the function to others: Jacobian elliptic functions, the elliptic integral of the third kind. */
+function neighbourModel<T>(id: string, args: readonly Expression[], index: number, u: Model<T>, n: Numbers<T>, m: ModelArithmetic<T>): Model<T> | null {
+  const { r } = n;
+  const jacobi = isJacobi(id) && index === 0;
+  if (!jacobi && !(id === 'ellipticPiParameter' && index === 1)) return null;
+  const other = args[1 - index];
+  const constant = other && n.value(other);
+  const offset = withoutConstant(m, u);
+  const spread = m.rangeOf(offset);
+  const [fixed, centre, reach] = [constant && n.toBall(constant), n.toBall(u.coefficients[0] ?? r.zero), spread && n.toBall(r.upperEnd(r.absolute(spread)))];
+  if (!fixed || !centre || !reach) return null;
+  const precision = n.precision <= 53 ? 64 : n.precision;
+  const series = jacobi ? jacobiSeries(id, fixed, centre, reach, precision, m.length) : thirdKindSeries(fixed, centre, reach, precision, m.length);
+  return series && hornerWithTail(series.coefficients.map((c) => n.fromBall(c)), n.fromBall(series.remainder), offset, n, m);
 }
 
 /** Horner's rule in the offset, with the rest of the series as a tail of its K-th power. */
-function composed<T>(series: Series, offset: Model<T>, D: number, n: Numbers<T>, m: ModelArithmetic<T>): Model<T> | null {
+function composed<T>(series: CircleSeries, offset: Model<T>, D: number, n: Numbers<T>, m: ModelArithmetic<T>): Model<T> | null {
   const { r } = n;
   const K = series.coefficients.length;
   const ratio = real.divide(real.fromDouble(D), real.fromDouble(series.radius), 60);
@@ -226,125 +233,6 @@ function composed<T>(series: Series, offset: Model<T>, D: number, n: Numbers<T>,
   const factor = n.fromBall(real.upperEnd(size));
   const unit = r.union(r.negate(r.one), r.one);
   return hornerWithTail(series.coefficients.map((c) => n.fromBall(c)), r.multiply(factor, unit), offset, n, m);
-}
-
-function seriesOf(id: string, parameters: readonly ComplexBall[], index: number, centre: Ball, radius: number, precision: number, length: number): Series | null {
-  const key = `${id}|${index}|${parameters.map((z) => `${z.re.mid},${z.re.rad},${z.re.exp},${z.im.mid}`).join(';')}|${centre.mid},${centre.rad},${centre.exp}|${radius}|${precision}`;
-  const known = cache.get(key);
-  if (known !== undefined && (known === null || known.coefficients.length >= length)) return known && { ...known, coefficients: known.coefficients.slice(0, length) };
-  const made = computeSeries(id, parameters, index, centre, radius, precision, length);
-  if (cache.size >= CACHE_SIZE) cache.clear();
-  cache.set(key, made);
-  return made;
-}
-
-function computeSeries(id: string, parameters: readonly ComplexBall[], index: number, centre: Ball, radius: number, precision: number, length: number): Series | null {
-  const f = describe(id)?.enclose;
-  if (!f) return null;
-  const at = (z: ComplexBall, bits: number): ComplexBall | null => {
-    const args = [...parameters];
-    args.splice(index, 0, z);
-    return f(args, bits);
-  };
-  const bound = majorant(id, parameters, index, centre, radius) ?? maximumOnCircle(at, centre, radius);
-  if (bound === null) return null;
-  // M points on half the radius; f is real on the real axis, so the lower half mirrors the upper.
-  // More points than coefficients: those of M higher powers are then all that is added to one.
-  const half = Math.max(precision <= 64 ? 28 : Math.ceil((precision + 12) / 2), Math.ceil((length + 1) / 2));
-  const M = 2 * half;
-  const work = precision + 16;
-  const c = complex.arithmetic(work);
-  const inner = real.fromDouble(radius / 2);
-  const values: ComplexBall[] = [];
-  const roots: ComplexBall[] = [];
-  const pi = real.pi(work);
-  for (let j = 0; j < M; j += 1) {
-    const angle = real.divide(real.multiply(real.scaleByPowerOfTwo(pi, 1), real.fromInteger(j), work), real.fromInteger(M), work) ?? real.ZERO;
-    const [s, co] = j === 0 ? [real.ZERO, real.ONE] : j === half ? [real.ZERO, real.fromInteger(-1)] : real.sinCos(angle, work);
-    roots.push({ re: co, im: s });
-  }
-  for (let j = 0; j <= half; j += 1) {
-    const root = roots[j] ?? complex.ONE;
-    const z: ComplexBall = { re: real.add(centre, real.multiply(root.re, inner, work), work), im: real.multiply(root.im, inner, work) };
-    const value = at(z, work);
-    if (value === null) return null;
-    values.push(value);
-  }
-  const alias = real.scaleByPowerOfTwo(real.upperEnd(bound), 1 - M);
-  const coefficients: Ball[] = [];
-  let scale: Ball = real.ONE;
-  for (let k = 0; k < length; k += 1) {
-    // Re of sum over the upper half, ends once and inner points twice.
-    let sum = real.ZERO;
-    for (let j = 0; j <= half; j += 1) {
-      const root = roots[(j * k) % M] ?? complex.ONE;
-      const value = values[j] ?? complex.ZERO;
-      const part = c.real.add(c.real.multiply(value.re, root.re), c.real.multiply(value.im, root.im));
-      sum = c.real.add(sum, j === 0 || j === half ? part : real.scaleByPowerOfTwo(part, 1));
-    }
-    const mean = real.withRadius(c.real.divideInteger(sum, M), alias);
-    const coefficient = real.divide(mean, scale, work);
-    if (coefficient === null) return null;
-    coefficients.push(coefficient);
-    scale = real.multiply(scale, inner, work);
-  }
-  // f(u0) itself is known better directly.
-  const first = at(complex.fromReal(centre), work);
-  if (first !== null && coefficients[0]) coefficients[0] = real.intersection(first.re, coefficients[0], work) ?? first.re;
-  return { radius, coefficients, bound: real.upperEnd(bound) };
-}
-
-/**
- * max |f| on the circle from one real value, where a bound by a positive function is known: J and I of integer order by I at |z| (power series), K by K at Re z (DLMF 10.32.9),
- * Ai and Bi by Bi at |z| (power series), zeta by zeta at Re s > 1, polylog and K(m) by themselves at |z| < 1 (positive coefficients).
- */
-function majorant(id: string, parameters: readonly ComplexBall[], index: number, centre: Ball, radius: number): Ball | null {
-  const real1 = (name: string, x: Ball): Ball | null => {
-    const args = parameters.map((z) => z.re);
-    args.splice(index, 0, x);
-    const value = describe(name)?.encloseReal?.(args, 64) ?? null;
-    return value === null ? null : real.upperEnd(real.absolute(value));
-  };
-  const size = real.upperEnd(real.add(real.absolute(centre), real.fromDouble(radius), 64));
-  const left = real.lowerEnd(real.subtract(centre, real.fromDouble(radius), 64));
-  const inUnit = real.compare(size, real.ONE) === -1;
-  switch (id) {
-    case 'besselJ':
-    case 'besselI': {
-      const [order] = parameters;
-      return order && real.isExact(order.re) && real.floorOf(order.re) !== null && real.isNonNegative(order.re) && real.compare(order.re, real.fromInteger(real.floorOf(order.re) ?? -1n)) === 0 ? real1('besselI', size) : null;
-    }
-    case 'besselK':
-      return real.isPositive(left) ? real1('besselK', left) : null;
-    case 'airyAi':
-    case 'airyBi':
-      return real1('airyBi', size);
-    case 'zeta':
-      return real.compare(left, real.ONE) === 1 ? real1('zeta', left) : null;
-    case 'polylog':
-    case 'ellipticKParameter':
-      return inUnit ? real1(id, size) : null;
-    default:
-      return null;
-  }
-}
-
-/** An upper bound of |f| on |z - centre| = radius by rectangles over arcs of the upper half. */
-function maximumOnCircle(at: (z: ComplexBall, bits: number) => ComplexBall | null, centre: Ball, radius: number): Ball | null {
-  for (const arcs of [12, 32, 96]) {
-    let largest: Ball | null = real.ZERO;
-    for (let j = 0; j < arcs && largest !== null; j += 1) {
-      const angles = interval.multiply(interval.PI, interval.fromEnds(j / arcs, (j + 1) / arcs));
-      const widened = interval.fromEnds(interval.down(angles.lo), interval.up(angles.hi));
-      const [s, c] = interval.sinCos(widened);
-      const size = interval.fromDouble(radius);
-      const [x, y] = [interval.toBall(interval.multiply(c, size)), interval.toBall(interval.multiply(s, size))];
-      const value: ComplexBall | null = x === null || y === null ? null : at({ re: real.add(centre, x, 64), im: y }, 64);
-      largest = value === null ? null : real.upperEnd(real.maximum(largest, complex.absolute(value, 64)));
-    }
-    if (largest !== null && real.exponentOf(largest) < 4000) return largest;
-  }
-  return null;
 }
 
 /** psi and its derivatives by Hurwitz zeta values; the argument must stay positive. */
@@ -362,17 +250,6 @@ function polygammaModel<T>(id: string, args: readonly Expression[], argument: Mo
   if (series === null) return null;
   const offset = withoutConstant(m, u);
   return hornerWithTail(series.coefficients.map((c) => n.fromBall(c)), n.fromBall(series.remainder), offset, n, m);
-}
-
-/** sum a_k d^k + remainder d^K. */
-function hornerWithTail<T>(coefficients: readonly T[], remainder: T, offset: Model<T>, n: Numbers<T>, m: ModelArithmetic<T>): Model<T> | null {
-  const K = coefficients.length;
-  let sum: Model<T> = m.constant(n.r.zero);
-  for (let k = K - 1; k >= 0; k -= 1) sum = m.add(m.constant(coefficients[k] ?? n.r.zero), m.multiply(sum, offset));
-  const last = m.powerInteger({ valuation: offset.valuation, coefficients: [], tail: offset.range, range: offset.range }, K);
-  if (last === null) return null;
-  const tail = n.r.multiply(last.range, remainder);
-  return m.add(sum, { valuation: offset.valuation * K, coefficients: [], tail, range: tail });
 }
 
 /** E_k for whole k >= 1 on positive arguments through E_k' = -E_(k-1), E_0 = e^-u/u (DLMF 8.19.13). */

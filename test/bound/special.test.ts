@@ -33,6 +33,8 @@ const atInfinity: readonly Row[] = [
   { name: 'erfc', f: call('erfc', x), point: 'inf', terms: 4, interval: ['3', 'inf'], worst: '3', ratio: 1.5, source: 'DLMF 7.12(i)' },
   { name: 'exp(x^2) erfc x', f: build.product(call('exp', build.power(x, 2)), call('erfc', x)), point: 'inf', terms: 3, interval: ['3', 'inf'], worst: '3', ratio: 1.5, source: 'DLMF 7.12(i)' },
   { name: 'E_1', f: call('expIntegralE', 1, x), point: 'inf', terms: 4, interval: ['5', 'inf'], worst: '5', ratio: 1.5, source: 'DLMF 6.12(i)' },
+  { name: 'Dawson', f: call('dawson', x), point: 'inf', terms: 3, interval: ['5', 'inf'], worst: '5', ratio: 1.5, source: 'DLMF 7.2.5 by parts' },
+  { name: 'log G', f: call('logBarnesG', build.sum(build.number(1), x)), point: 'inf', terms: 8, interval: ['6', 'inf'], worst: '6', ratio: 1.5, source: 'DLMF 5.17.5' },
 ];
 const elsewhere: readonly Row[] = [
   { name: 'Gamma at its pole', f: call('gamma', x), point: '0', terms: 4, interval: ['0', '1/2'], worst: '1/2', ratio: 1.02, source: 'DLMF 5.7.1' },
@@ -43,6 +45,20 @@ const elsewhere: readonly Row[] = [
   { name: 'Ci', f: call('cosIntegral', x), point: '0', terms: 4, interval: ['0', '2'], worst: '2', ratio: 1.02, source: 'DLMF 6.6.6' },
   { name: 'Si', f: call('sinIntegral', x), point: '0', terms: 4, interval: ['0', '2'], worst: '2', ratio: 1.02, source: 'DLMF 6.6.5' },
   { name: 'erf', f: call('erf', x), point: '0', terms: 4, interval: ['-1', '1'], worst: '1', ratio: 1.02, source: 'DLMF 7.6.1' },
+  { name: 'Gamma(1/3, x)', f: exact('upperGamma(1/3,x)'), point: '0', terms: 3, interval: ['0', '1/2'], worst: '1/2', ratio: 1.02, source: 'DLMF 8.7.1, 8.2.3' },
+  { name: 'Gamma(-2, x)', f: exact('upperGamma(-2,x)'), point: '0', terms: 4, interval: ['0', '1/2'], worst: '1/2', ratio: 1.02, source: 'DLMF 8.4.13, 8.19.12' },
+  { name: 'G at zero', f: call('barnesG', x), point: '0', terms: 3, interval: ['-1/4', '1/4'], worst: '-1/4', ratio: 1.02, source: 'DLMF 5.17.1, 5.17.3' },
+  { name: 'superfactorial', f: call('superfactorial', x), point: '0', terms: 3, interval: ['-1/4', '1/4'], worst: '-1/4', ratio: 1.02, source: 'DLMF 5.17.3' },
+  { name: 'ber', f: call('kelvinBer', 0, x), point: '0', terms: 3, interval: ['-1', '1'], worst: '1', ratio: 1.02, source: 'DLMF 10.65.1' },
+  { name: 'ker', f: call('kelvinKer', 0, x), point: '0', terms: 3, interval: ['0', '1'], worst: '1', ratio: 1.02, source: 'DLMF 10.65.3' },
+  { name: 'kei_1', f: call('kelvinKei', 1, x), point: '0', terms: 4, interval: ['0', '1'], worst: '1', ratio: 1.02, source: 'DLMF 10.65.4' },
+  { name: 'ker_(1/2)', f: exact('kelvinKer(1/2,x)'), point: '0', terms: 4, interval: ['0', '1'], worst: '1', ratio: 1.02, source: 'DLMF 10.61.2, 10.27.4' },
+  { name: 'Ti_2', f: call('inverseTangentIntegral', x), point: '0', terms: 3, interval: ['-1/2', '1/2'], worst: '1/2', ratio: 1.02, source: 'sum (-1)^k x^(2k+1)/(2k+1)^2' },
+  { name: 'sn', f: exact('jacobiSn(x,1/2)'), point: '0', terms: 3, interval: ['-1', '1'], worst: '1', ratio: 1.02, source: 'DLMF 22.10.1' },
+  { name: 'dn at 1', f: exact('jacobiDn(x,1/2)'), point: '1', terms: 3, interval: ['0', '2'], worst: '0', ratio: 1.02, source: 'DLMF 22.13.3' },
+  { name: 'Pi(1/3, k)', f: exact('ellipticPi(1/3,x)'), point: '0', terms: 3, interval: ['-1/2', '1/2'], worst: '1/2', ratio: 1.02, source: 'DLMF 19.4.4, 19.5.4' },
+  { name: 'W_0 at -1/e', f: exact('lambertW(0,x)'), point: '-exp(-1)', terms: 4, interval: ['-exp(-1)', '-1/5'], worst: '-1/5', ratio: 1.02, source: 'DLMF 4.13.6' },
+  { name: 'W_(-1) at -1/e', f: exact('lambertW(-1,x)'), point: '-exp(-1)', terms: 3, interval: ['-exp(-1)', '-7/20'], worst: '-7/20', ratio: 1.02, source: 'DLMF 4.13.6' },
 ];
 describe.each([...atInfinity, ...elsewhere])('$name ($source)', ({ f, point, terms, interval, worst, ratio }) => {
   test('is bounded, and tightly', () => {

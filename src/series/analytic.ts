@@ -126,7 +126,8 @@ export function sumOfSeries(c: Context, element: ScaleElement, part: (k: number)
   return new Series(element, stream, unnamed);
 }
 
-function binomial(n: number, k: number): bigint {
+/** n over k, for whole 0 <= k <= n. */
+export function binomial(n: number, k: number): bigint {
   let result = 1n;
   for (let j = 1; j <= k; j += 1) result = (result * BigInt(n - k + j)) / BigInt(j);
   return result;

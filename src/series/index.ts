@@ -1,5 +1,5 @@
 /** The door of series/: multiseries over an asymptotic scale, arithmetic and analytic functions of them. */
-export { alongDerivative, compose, hyperbolic, sineCosine, sumOfSeries } from './analytic.ts';
+export { alongDerivative, binomial, compose, hyperbolic, sineCosine, sumOfSeries } from './analytic.ts';
 export { theta } from './derivation.ts';
 export { compareExponents, signOfExponent, undecidedSign } from './exponent.ts';
 export { divide, exponential, generalPower, isEvenLead, isRealMulti, levels, logarithm, noteSides, pi, power, reciprocal, requireOscillation, withExact } from './exponential.ts';

@@ -25,7 +25,7 @@ export function integrate(c: Context, f: Multi): Multi {
 /** F with D F = f where D is the derivation of the iterated logarithm of that depth (0: t d/dt). */
 function integrateIn(c: Context, f: Multi, depth: number, own: ScaleElement): Multi {
   if (!(f instanceof Series)) {
-    if (isOscillating(c, f)) throw new Declined('no-expansion', 'The integral of an oscillating function is not expanded here; use the sine or cosine integral.');
+    if (isOscillating(c, f)) throw refuseOscillation();
     return isLiteralZero(f) || isZero(c, f) ? Q.ZERO : scaleBy(c, logarithmOf(c, own), f);
   }
   if (f.element === own) {
@@ -58,8 +58,11 @@ function integrateSlower(c: Context, f: Multi, depth: number, own: ScaleElement)
   return integrateIn(c, shift(c, f, next, Q.MINUS_ONE), depth + 1, next);
 }
 
+const refuseOscillation = (): Declined => new Declined('no-expansion', 'The integral of an oscillating function is not expanded here; use the sine or cosine integral.');
+
 /** G with (e + D) G = a for a constant e: the sum of (-D)^k a/e^(k+1). */
 function solve(c: Context, a: Multi, e: Element, derivation: (g: Multi) => Multi): Multi {
+  if (!(a instanceof Series) && isOscillating(c, a)) throw refuseOscillation();
   const inverse = reciprocalElement(c, e);
   const first = scaleBy(c, a, inverse);
   if (!(a instanceof Series)) return first;
@@ -68,6 +71,7 @@ function solve(c: Context, a: Multi, e: Element, derivation: (g: Multi) => Multi
 
 /** G with (s + theta) G = a for an unbounded s: the sum of (-theta/s)^k a/s. */
 function solveFast(c: Context, a: Multi, s: Multi): Multi {
+  if (!(a instanceof Series) && isOscillating(c, a)) throw refuseOscillation();
   const inverse = reciprocal(c, s);
   const back = scaleBy(c, inverse, Q.MINUS_ONE);
   return neumann(c, multiply(c, a, inverse), (g) => multiply(c, theta(c, g), back));

@@ -10,6 +10,8 @@ describe('stationary points inside the interval', () => {
     // Each is a known function: 2 K_1(2x) (DLMF 10.32.10 with 10.40.2); the two wells of a double well (Zinn-Justin, from memory; checked by quadrature with mpmath 1.3.0); e^(2x) K_(1/3)-type integral of a cubic.
     ['\\int_0^\\infty e^{-x(t+1/t)}\\,dt', '(√π·e^(−2x)/√x)·(1 + 3/(16x) − 15/(512x²) + O(x⁻³))'],
     ['\\int_{-\\infty}^{\\infty} e^{-x(t^2-1)^2}\\,dt', '√π/√x + 3√π/(16x^(3/2)) + 105√π/(512x^(5/2)) + O(x^(−7/2))'],
+    // 3 pi I_0 without what is exponentially small beside it: DLMF 10.32.1, 10.40.1.
+    ['\\int_0^{3\\pi} e^{-x\\cos t}\\,dt', '(3√(2π)·e^x/(2√x))·(1 + 1/(8x) + 9/(128x²) + O(x⁻³))'],
     ['\\int_0^\\infty e^{-x(t^3-3t)}\\,dt', '(√(3π)·e^(2x)/(3√x))·(1 + 5/(144x) + 385/(41472x²) + O(x⁻³))'],
   ])('%s', (formula, expected) => {
     expect(textOf(formula, 'x')).toBe(expected);

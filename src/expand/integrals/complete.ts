@@ -3,6 +3,8 @@
  * - t^(s-1) R(e^(-b t)), R rational with its poles at roots of unity: with R = sum c_k q^k the integral is Gamma(s) b^(-s) sum c_k k^(-s) (DLMF 25.5.1, 25.5.3, 25.11.25), where c_k is a polynomial in k
  *   on each residue class, so that the sum is one of Hurwitz zeta functions; likewise t^(s-1) log(1 -+ e^(-b t));
  * - t^(s-1) exp(-b t^m): Gamma(s/m) b^(-s/m)/m (DLMF 5.9.1);
+ * - t^(s-1) sin(b t^m) and cos(b t^m): Gamma(s/m) times a sine or cosine of pi s/(2m) (DLMF 5.9.6, 5.9.7);
+ * - t^(s-1) log(1 + d t^m) and arctan(d t^m), by parts from the next;
  * - t^(s-1) (c + d t^m)^(-r): a beta function (DLMF 5.12.3); on (0, (c/d)^(1/m)) the same with d < 0 (DLMF 5.12.1).
  */
 import type { Element, Field } from '../../algebra/types.ts';
@@ -55,7 +57,9 @@ function ofTerm(field: Field, e: Expression, v: string, high: Expression | null,
   const parts: Factors = { constant: Q.ONE, power: Q.ZERO, others: [] };
   if (!sort(field, e, v, Q.ONE, parts)) return null;
   const s = field.add(parts.power, Q.ONE);
-  const value = (high === null ? (byZeta(field, parts, v, s, ends) ?? byGamma(field, parts, v, s, ends)) : null) ?? byBeta(field, parts, v, s, high, ends);
+  // The continuation of the integral of a power alone, from 0 to 1 and on from there, is 0.
+  if (parts.others.length === 0 && high === null && !ends.atZero && !ends.atInfinity) return Q.ZERO;
+  const value = (high === null ? (byZeta(field, parts, v, s, ends) ?? byGamma(field, parts, v, s, ends) ?? byWave(field, parts, v, s, ends) ?? byParts(field, parts, v, s, ends)) : null) ?? byBeta(field, parts, v, s, high, ends);
   return value && field.multiply(parts.constant, value);
 }
 
@@ -127,24 +131,93 @@ function addClass(field: Field, sum: Element, { residue, modulus, powers, correc
   return total;
 }
 
-/** b t^m with constant b and m > 0. */
-function monomialIn(field: Field, e: Expression, v: string): { readonly coefficient: Element; readonly degree: Element } | null {
+interface PowerOf {
+  readonly coefficient: Element;
+  readonly degree: Element;
+}
+
+/** b t^m with constant b and m != 0. */
+function anyMonomialIn(field: Field, e: Expression, v: string): PowerOf | null {
   const parts: Factors = { constant: Q.ONE, power: Q.ZERO, others: [] };
-  if (!sort(field, e, v, Q.ONE, parts) || parts.others.length > 0 || field.sign(parts.power) !== 1) return null;
-  return { coefficient: parts.constant, degree: parts.power };
+  if (!sort(field, e, v, Q.ONE, parts) || parts.others.length > 0) return null;
+  const sign = field.sign(parts.power);
+  return sign === 1 || sign === -1 ? { coefficient: parts.constant, degree: parts.power } : null;
+}
+
+/** b t^m with constant b and m > 0. */
+function monomialIn(field: Field, e: Expression, v: string): PowerOf | null {
+  const found = anyMonomialIn(field, e, v);
+  return found && field.sign(found.degree) === 1 ? found : null;
+}
+
+/** The monomial with a positive degree, in 1/t where it has a negative one in t. */
+function turnedToRise(field: Field, e: Expression, v: string, s: Element, ends: Convergence): { readonly monomial: PowerOf; readonly s: Element; readonly ends: Convergence } | null {
+  const monomial = anyMonomialIn(field, e, v);
+  if (!monomial || field.sign(monomial.degree) === 1) return monomial && { monomial, s, ends };
+  return { monomial: { ...monomial, degree: field.negate(monomial.degree) }, s: field.negate(s), ends: { atZero: ends.atInfinity, atInfinity: ends.atZero } };
+}
+
+/** The one argument of the one function that stands beside the power of t. */
+function onlyCall({ others }: Factors, names: readonly string[]): { readonly name: string; readonly argument: Expression } | null {
+  const [only] = others;
+  if (!only || others.length !== 1 || only.base.kind !== 'call' || !names.includes(only.base.function) || only.base.args.length !== 1) return null;
+  const [argument] = only.base.args;
+  return argument && 'num' in only.exponent && Q.isOne(only.exponent) ? { name: only.base.function, argument } : null;
+}
+
+/** t^(s-1) sin(b t^m), cos(b t^m): 0 < s/m < 1, with the sine from -1 on. */
+function byWave(field: Field, parts: Factors, v: string, power: Element, at: Convergence): Element | null {
+  const wave = onlyCall(parts, ['sin', 'cos']);
+  const turned = wave && turnedToRise(field, wave.argument, v, power, at);
+  if (!wave || !turned) return null;
+  const { monomial, s, ends } = turned;
+  const order = field.divide(s, monomial.degree);
+  const sine = wave.name === 'sin';
+  if (ends.atZero && !isPositive(field, sine ? field.add(order, Q.ONE) : order)) return null;
+  if (ends.atInfinity && !isPositive(field, field.subtract(Q.ONE, order))) return null;
+  const sign = field.sign(monomial.coefficient);
+  if (sign !== 1 && sign !== -1) return null;
+  const rate = sign === 1 ? monomial.coefficient : field.negate(monomial.coefficient);
+  const pi = field.fromExpression(build.constant('pi'));
+  // Gamma(u) sin(pi u/2) tends to pi/2 at u = 0.
+  const value = sine && field.isZero(order) === 'yes' ? field.multiply(Q.HALF, pi) : field.multiply(field.call('gamma', [order]), field.call(wave.name, [field.multiply(field.multiply(Q.HALF, pi), order)]));
+  const whole = field.divide(value, field.multiply(monomial.degree, field.power(rate, order)));
+  return sine && sign === -1 ? field.negate(whole) : whole;
+}
+
+/** t^(s-1) log(1 + d t^m): pi d^(-s/m)/(s sin(pi s/m)) for -m < s < 0; t^(s-1) arctan(d t^m): -pi d^(-s/m)/(2 s cos(pi s/(2m))) for -m < s < 0. */
+function byParts(field: Field, parts: Factors, v: string, power: Element, at: Convergence): Element | null {
+  const found = onlyCall(parts, ['log', 'log1p', 'atan']);
+  if (!found) return null;
+  const { argument } = found;
+  const inner = found.name !== 'log' ? argument : argument.kind === 'sum' ? build.sum(...argument.terms.filter((t) => !(t.kind === 'number' && Q.isOne(t.value)))) : null;
+  if (!inner || (found.name === 'log' && argument.kind === 'sum' && argument.terms.filter((t) => !dependsOn(t, v)).length !== 1)) return null;
+  const turned = turnedToRise(field, inner, v, power, at);
+  if (!turned || field.sign(turned.monomial.coefficient) !== 1) return null;
+  const { monomial, s, ends } = turned;
+  const order = field.divide(s, monomial.degree);
+  if (ends.atZero && !isPositive(field, field.add(order, Q.ONE))) return null;
+  if (ends.atInfinity && !isPositive(field, field.negate(s))) return null;
+  const pi = field.fromExpression(build.constant('pi'));
+  const above = field.multiply(pi, field.power(monomial.coefficient, field.negate(order)));
+  if (found.name !== 'atan') return field.divide(above, field.multiply(s, field.call('sin', [field.multiply(pi, order)])));
+  return field.negate(field.divide(above, field.multiply(Q.rational(2), field.multiply(s, field.call('cos', [field.multiply(field.multiply(Q.HALF, pi), order)])))));
 }
 
 function byGamma(field: Field, { others }: Factors, v: string, s: Element, ends: Convergence): Element | null {
   const [only] = others;
-  if (!only || others.length !== 1 || (ends.atZero && field.sign(s) !== 1)) return null;
+  if (!only || others.length !== 1) return null;
   const { base } = only;
   const exponent = base.kind === 'call' && base.function === 'exp' ? base.args[0] : base.kind === 'power' && base.base.kind === 'constant' && base.base.name === 'e' ? base.exponent : undefined;
-  const monomial = exponent ? monomialIn(field, exponent, v) : null;
+  const monomial = exponent ? anyMonomialIn(field, exponent, v) : null;
   if (!monomial) return null;
   const rate = field.negate(field.multiply(monomial.coefficient, only.exponent));
   if (field.sign(rate) !== 1) return null;
   const order = field.divide(s, monomial.degree);
-  return field.divide(field.call('gamma', [order]), field.multiply(monomial.degree, field.power(rate, order)));
+  const growing = field.sign(monomial.degree) === 1;
+  if ((growing ? ends.atZero : ends.atInfinity) && !isPositive(field, order)) return null;
+  const size = growing ? monomial.degree : field.negate(monomial.degree);
+  return field.divide(field.call('gamma', [order]), field.multiply(size, field.power(rate, order)));
 }
 
 /** The integral of t^(s-1) (c + d t^m)^(-r): with u = s/m it is c^(-r) (c/d)^u B(u, r - u)/m, or on (0, (c/-d)^(1/m)) c^(-r) (c/-d)^u B(u, 1 - r)/m. */

@@ -6,8 +6,10 @@ import { add, type Context, eventualSign, exactOf, growth, integrate, isKnownZer
 import { openSide } from '../open-side.ts';
 import { type Evaluate, bind, type Session } from '../session.ts';
 import { completeIntegral, SHIFT } from './complete.ts';
+import { byMellin } from './mellin.ts';
 import { byMoments } from './moments.ts';
 import { regularOn } from './monotone.ts';
+import { byStationaryPhase } from './phase.ts';
 import { finiteIntegral } from './regular.ts';
 import { rescaled } from './rescale.ts';
 import { integrableAt, laplaceForm, watson } from './watson.ts';
@@ -104,7 +106,7 @@ function outgrowsPowers(c: Context, m: Multi): boolean {
 }
 
 /** Constant limits and the variable in the integrand. */
-function parametric(s: Session, e: IntegralNode, name: string, lower: Expression, upper: Expression, evaluate: Evaluate): Multi {
+function byParameter(s: Session, e: IntegralNode, name: string, lower: Expression, upper: Expression, evaluate: Evaluate): Multi {
   const low = infinityOf(lower);
   const high = infinityOf(upper);
   if (dependsOnBound(s, lower, '') || dependsOnBound(s, upper, '')) throw new Declined('no-expansion', 'An integral with the variable both in a limit and in the integrand is not expanded here; substitute so that only one of them moves.');
@@ -118,6 +120,38 @@ function parametric(s: Session, e: IntegralNode, name: string, lower: Expression
   if (form && growth(s.context, evaluate(s, form.lambda)) === 'large') return watson(s, form, name, from, to, evaluate);
   if (from !== null && to !== null) return finiteIntegral(s, e.body, name, from, to, evaluate);
   return byMoments(s, e.body, name, from, to, evaluate);
+}
+
+/** The integrand as the methods for regular, decaying and summable ones take it; where none of them serves, by Mellin transforms over (0, inf) or by stationary phase. */
+function parametric(s: Session, e: IntegralNode, name: string, lower: Expression, upper: Expression, evaluate: Evaluate): Multi {
+  try {
+    return byParameter(s, e, name, lower, upper, evaluate);
+  } catch (error) {
+    if (!(error instanceof Declined) || error.failure.code !== 'no-expansion') throw error;
+    const found = otherwise(s, e, name, lower, upper, evaluate);
+    if (found === null) throw error;
+    return found;
+  }
+}
+
+function otherwise(s: Session, e: IntegralNode, name: string, lower: Expression, upper: Expression, evaluate: Evaluate): Multi | null {
+  const c = s.context;
+  const low = infinityOf(lower) === 0 ? lower : null;
+  const high = infinityOf(upper) === 0 ? upper : null;
+  if (low && high === null && isZero(c, c.field.fromExpression(low))) {
+    const found = orNull(() => byMellin(s, e.body, name, c.local, evaluate));
+    if (found !== null) return found;
+  }
+  return orNull(() => byStationaryPhase(s, e.body, name, low, high, evaluate));
+}
+
+function orNull(find: () => Multi | null): Multi | null {
+  try {
+    return find();
+  } catch (error) {
+    if (error instanceof Declined && (error.failure.code === 'no-expansion' || error.failure.code === 'undecided')) return null;
+    throw error;
+  }
 }
 
 interface End {

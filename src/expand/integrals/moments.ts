@@ -7,7 +7,7 @@ import type { Element } from '../../algebra/types.ts';
 import { build, children, dependsOn, type Expression, Q } from '../../expression/index.ts';
 import { addElements, type Context, eventualSign, growth, mapStream, type Multi, multiplyElements, Series, unnamed } from '../../series/index.ts';
 import { type Evaluate, type Session } from '../session.ts';
-import { type Range, signOn } from './monotone.ts';
+import { weakSign } from './monotone.ts';
 import { polynomialIn, refuse } from './polynomial.ts';
 
 /** v^power exp(-rate v^degree): what is integrated on an infinite interval. */
@@ -82,14 +82,6 @@ function requireClass(s: Session, f: Expression, v: string, low: Expression | nu
   throw refuse();
 }
 
-/** Sign that may touch zero: even powers have one without their base. */
-function weakSign(range: Range, e: Expression): 1 | -1 | null {
-  if (e.kind === 'product') return e.factors.reduce<1 | -1 | null>((s, f) => { const own = weakSign(range, f); return s === null || own === null ? null : s === own ? 1 : -1; }, 1);
-  if (e.kind === 'power' && e.exponent.kind === 'number' && e.exponent.value.den === 1n && e.exponent.value.num > 0n && e.exponent.value.num % 2n === 0n) return 1;
-  if (e.kind === 'sum') return e.terms.every((t) => weakSign(range, t) === 1) ? 1 : e.terms.every((t) => weakSign(range, t) === -1) ? -1 : null;
-  return signOn(range, e);
-}
-
 function withoutOne(e: Expression): Expression {
   if (e.kind !== 'sum') throw refuse();
   const rest = e.terms.filter((t) => !(t.kind === 'number' && Q.isOne(t.value)));
@@ -98,7 +90,7 @@ function withoutOne(e: Expression): Expression {
 }
 
 /** A product as (part without v) * (part in v alone). */
-function separated(e: Expression, v: string, moves: (e: Expression) => boolean): { variable: Expression; polynomial: Expression } | null {
+export function separated(e: Expression, v: string, moves: (e: Expression) => boolean): { variable: Expression; polynomial: Expression } | null {
   const variable: Expression[] = [];
   const polynomial: Expression[] = [];
   const visit = (f: Expression): boolean => {

@@ -60,6 +60,7 @@ export function signOn(r: Range, e: Expression): 1 | -1 | null {
       const signs = e.terms.map((t) => signOn(r, t));
       if (signs.every((s) => s === 1)) return 1;
       if (signs.every((s) => s === -1)) return -1;
+      if (signs.includes(1) && e.terms.every((t) => weakSign(r, t) === 1)) return 1;
       return signByEnds(r, e);
     }
     case 'product':
@@ -83,6 +84,14 @@ export function signOn(r: Range, e: Expression): 1 | -1 | null {
     default:
       return null;
   }
+}
+
+/** Sign that may touch zero: even powers have one without their base. */
+export function weakSign(range: Range, e: Expression): 1 | -1 | null {
+  if (e.kind === 'product') return e.factors.reduce<1 | -1 | null>((s, f) => multiplied(s, weakSign(range, f)), 1);
+  if (e.kind === 'power' && e.exponent.kind === 'number' && e.exponent.value.den === 1n && e.exponent.value.num > 0n && e.exponent.value.num % 2n === 0n) return 1;
+  if (e.kind === 'sum') return e.terms.every((t) => weakSign(range, t) === 1) ? 1 : e.terms.every((t) => weakSign(range, t) === -1) ? -1 : null;
+  return signOn(range, e);
 }
 
 const multiplied = (a: 1 | -1 | null, b: 1 | -1 | null): 1 | -1 | null => (a === null || b === null ? null : a === b ? 1 : -1);

@@ -1,18 +1,13 @@
 /**
  * Laplace's method by Watson's lemma: integral of g(v) exp(-lambda phi(v)) with unbounded lambda, phi monotone on each piece.
- * With phi(v0 + s) - phi(v0) = a s^p (1 + e(s)) the coefficients come from Lagrange's theorem without inverting phi:
- * sum over powers n of Gamma((n+1)/p)/p * [s^n] (g (1+e)^(-(n+1)/p)) (a lambda)^(-(n+1)/p).
  * Source: Olver, Asymptotics and Special Functions (1974), ch. 3, sections 3 and 8 (from memory).
  */
-import type { Element } from '../../algebra/types.ts';
 import { build, dependsOn, type Expression, Q, sameExpression, substitute } from '../../expression/index.ts';
 import { Declined } from '../../outcome.ts';
-import {
-  add, addElements, beyondAllOrders, compareExponents, type Context, exponential, growth, isRational, isZero, leading, monomialOf, type Multi, multiply, multiplyElements, negate, power, powerTailOf, relativeTail, scaleBy,
-  Series, signOfExponent, type Stream, streamIn, subtract, sumOfSeries,
-} from '../../series/index.ts';
+import { add, beyondAllOrders, compareExponents, exponential, growth, isZero, monomialOf, type Multi, multiply, negate, scaleBy, subtract } from '../../series/index.ts';
 import { type Direction, openSide } from '../open-side.ts';
 import type { Evaluate, Session } from '../session.ts';
+import { atEnd, transfer } from './end.ts';
 import { directionOn, type Range, regularOn } from './monotone.ts';
 import { monotonePieces } from './stationary.ts';
 
@@ -138,7 +133,7 @@ export function watson(s: Session, form: LaplaceForm, v: string, low: Expression
   const own = inner.context;
   const psi = subtract(own, evaluate(inner.session, inner.fromVariable(phi)), transfer(own, c, height));
   const g = evaluate(inner.session, inner.fromVariable(form.weight));
-  const { sum, finite } = lagrange(c, own, psi, g, large);
+  const { sum, finite } = atEnd(c, own, psi, g, large, null);
   const whole = finite && far === null;
   if (!finite) c.notes.divergent = true;
   const series = whole ? sum : multiply(c, sum, add(c, Q.ONE, beyondAllOrders(c, large)));
@@ -146,8 +141,6 @@ export function watson(s: Session, form: LaplaceForm, v: string, low: Expression
   const peak = isZero(c, height) ? Q.ONE : exponential(c, scaleBy(c, large, c.field.negate(height)));
   return multiply(c, multiply(c, front, peak), series);
 }
-
-const transfer = (to: Context, from: Context, e: Element): Element => (isRational(e) ? e : to.field.fromExpression(from.field.toExpression(e)));
 
 /** Whether (v - low) f(v) tends to zero faster than any logarithm could undo: f is integrable to the right of low. */
 export function integrableAt(s: Session, body: Expression, v: string, low: Expression, evaluate: Evaluate): boolean {
@@ -173,52 +166,4 @@ function requireIntegrable(s: Session, weight: Expression, phi: Expression, v: s
     if (size === 'small' || size === 'zero') return;
   }
   throw new Declined('no-expansion', 'The integral could not be shown to converge; correct its integrand.');
-}
-
-/** sum over n of Gamma((n+1)/p)/p [s^n](g (1+e)^(-(n+1)/p)) (a lambda)^(-(n+1)/p). */
-function lagrange(c: Context, own: Context, psi: Multi, g: Multi, lambda: Multi): { readonly sum: Multi; readonly finite: boolean } {
-  if (!(psi instanceof Series) || psi.element !== own.scale.local) throw new Declined('no-expansion', 'The exponent of the integrand has no power series at its extremum; split the integral.');
-  const lead = leading(own, psi);
-  if (!lead || lead.coefficient instanceof Series || signOfExponent(own, lead.exponent) <= 0) throw new Declined('no-expansion', 'The exponent of the integrand has no power series at its extremum; split the integral.');
-  const p = lead.exponent;
-  const rest = relativeTail(own, psi, lead);
-  const weights = streamIn(g, own.scale.local);
-  // The exponents n that can occur: those of g times any power of 1 + e.
-  const support = productOf(own, weights, powerTailOf(own, rest, Q.MINUS_ONE));
-  const inverse = own.field.divide(Q.ONE, p);
-  const element = monomialOf(c, lambda)?.factors[0]?.element;
-  if (!element) throw new Error('an unbounded parameter without a scale');
-  const part = (k: number): Multi => {
-    const n = support.at(k);
-    if (!n) return Q.ZERO;
-    if (n.order) throw new Declined('no-expansion', 'An O-term stands inside the integral; integrate the terms before it.');
-    const order = multiplyElements(own, addElements(own, n.exponent, Q.ONE), inverse);
-    if (own.field.sign(order) !== 1) throw new Declined('no-expansion', 'The integral diverges at the end that matters most; correct it.');
-    const coefficient = coefficientAt(own, productOf(own, weights, powerTailOf(own, rest, own.field.negate(order))), n.exponent);
-    const value = own.field.multiply(own.field.multiply(coefficient, own.field.multiply(own.field.call('gamma', [order]), inverse)), own.field.power(lead.coefficient as Element, own.field.negate(order)));
-    return scaleBy(c, power(c, lambda, transfer(c, own, own.field.negate(order))), transfer(c, own, value));
-  };
-  const finite = rest.at(0) === null && weights.at(0) !== null && endsSoon(weights);
-  return { sum: sumOfSeries(c, element, part, (k) => support.at(k) !== null), finite };
-}
-
-function endsSoon(stream: Stream): boolean {
-  for (let k = 0; k < 40; k += 1) if (stream.at(k) === null) return true;
-  return false;
-}
-
-function productOf(c: Context, a: Stream, b: Stream): Stream {
-  return streamIn(multiply(c, new Series(c.scale.local, a, () => ({ kind: 'dots' })), new Series(c.scale.local, b, () => ({ kind: 'dots' }))), c.scale.local);
-}
-
-function coefficientAt(c: Context, stream: Stream, exponent: Element): Element {
-  for (let k = 0; ; k += 1) {
-    const term = stream.at(k);
-    if (!term) return Q.ZERO;
-    const sign = compareExponents(c, term.exponent, exponent);
-    if (sign > 0) return Q.ZERO;
-    if (sign < 0) continue;
-    if (term.coefficient instanceof Series) throw new Declined('no-expansion', 'Logarithms in the integrand at the end that matters most are not expanded; split the integral.');
-    return term.coefficient;
-  }
 }

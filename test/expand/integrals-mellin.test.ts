@@ -1,0 +1,56 @@
+/** Integrals over the half line that expand with logarithms: residues of Mellin transforms, and Watson's lemma with logarithms at the end. */
+import { describe, expect, it } from 'vitest';
+import { expansionText } from '../../src/write/index.ts';
+import { expansionOf, latex, outcomeOf } from './tools.ts';
+
+const textOf = (formula: string, at: string, terms = 4): string => expansionText(expansionOf(formula, { at, side: at === '0' ? 'right' : 'both', terms }));
+
+describe('two scales on the half line', () => {
+  it.each([
+    // e^x E_1(x) and e^(1/x) E_1(1/x)/x: DLMF 6.2.1, 6.6.2, 6.12.1.
+    ['\\int_0^\\infty \\frac{e^{-t}}{x+t}\\,dt', '0', '−ln(x) − γ − x·ln(x) + (1 − γ)·x + O(x²·ln(x))'],
+    ['\\int_0^\\infty \\frac{e^{-t}}{x+t}\\,dt', 'inf', '1/x − 1/x² + 2/x³ − 6/x⁴ + O(x⁻⁵)'],
+    ['\\int_0^\\infty \\frac{e^{-t}}{1+x t}\\,dt', 'inf', 'ln(x)/x − γ/x + ln(x)/x² + (1 − γ)/x² + O(ln(x)/x³)'],
+    // e^x Gamma(1/2, x): DLMF 8.7.3.
+    ['\\int_0^\\infty \\frac{e^{-t}}{\\sqrt{x+t}}\\,dt', '0', '√π − 2√x + √π·x − 4x^(3/2)/3 + O(x²)'],
+    // 2 sqrt(x) K_1(2 sqrt x) and 2 K_0(2 sqrt x): DLMF 10.32.10, 10.31.1, 10.31.2.
+    ['\\int_0^\\infty e^{-t-x/t}\\,dt', '0', '1 + x·ln(x) + (2γ − 1)·x + x²·ln(x)/2 + O(x²)'],
+    ['\\int_0^\\infty e^{-t-x/t}\\,\\frac{dt}{t}', '0', '−ln(x) − 2γ − x·ln(x) + (2 − 2γ)·x + O(x²·ln(x))'],
+    // log(x)/(x - 1), by partial fractions.
+    ['\\int_0^\\infty \\frac{dt}{(1+t)(x+t)}', '0', '−ln(x) − x·ln(x) − x²·ln(x) − x³·ln(x) + O(x⁴·ln(x))'],
+    // pi/2 e^(-x): DLMF 1.14(vii).
+    ['\\int_0^\\infty \\frac{\\cos(x t)}{1+t^2}\\,dt', '0', 'π/2 − πx/2 + πx²/4 − πx³/12 + O(x⁴)'],
+    // The auxiliary functions f and g of the sine and cosine integrals: DLMF 6.7.13, 6.7.14, 6.12.3, 6.12.4.
+    ['\\int_0^\\infty \\frac{\\sin t}{x+t}\\,dt', 'inf', '1/x − 2/x³ + 24/x⁵ − 720/x⁷ + O(x⁻⁹)'],
+    ['\\int_0^\\infty \\frac{\\cos t}{x+t}\\,dt', 'inf', '1/x² − 6/x⁴ + 120/x⁶ − 5040/x⁸ + O(x⁻¹⁰)'],
+    ['\\int_0^\\infty \\frac{\\sin t}{x+t}\\,dt', '0', 'π/2 + x·ln(x) + (γ − 1)·x − πx²/4 + O(x³·ln(x))'],
+    // K(sqrt(1 - x^2)): DLMF 19.2.20 with 19.12.1.
+    ['\\int_0^\\infty \\frac{dt}{\\sqrt{(t^2+1)(t^2+x^2)}}', '0', '−ln(x) + 2ln(2) − x²·ln(x)/4 + (2ln(2) − 1)·x²/4 + O(x⁴·ln(x))'],
+    // Compared with quadrature by mpmath 1.3.0 at x = 1/4 ... 1/300.
+    ['\\int_0^\\infty \\frac{\\ln t\\, e^{-t}}{x+t}\\,dt', '0', '−ln²(x)/2 + γ²/2 − π²/12 − x·ln²(x)/2 + (12 − 12γ + 6γ² − π²)·x/12 + O(x²·ln²(x))'],
+    ['\\int_0^\\infty \\frac{t}{(e^t-1)(x+t)}\\,dt', '0', '−ln(x) − x·ln(x)/2 + (ln(2π) − γ)·x/2 − x²·ln(x)/12 + O(x²)'],
+    ['\\int_0^\\infty \\frac{1-\\cos(x t)}{t^2(1+t)}\\,dt', '0', '−x²·ln(x)/2 + (3 − 2γ)·x²/4 + πx³/12 + x⁴·ln(x)/24 + O(x⁴)'],
+    ['\\int_0^\\infty \\frac{\\arctan(x t)}{1+t^2}\\,dt', '0', '−x·ln(x) + x − x³·ln(x)/3 + x³/9 + O(x⁵·ln(x))'],
+  ])('%s at %s', (formula, at, expected) => {
+    expect(textOf(formula, at)).toBe(expected);
+  });
+  it('tells a divergent series from a convergent one', () => {
+    expect(expansionOf('\\int_0^\\infty \\frac{e^{-t}}{x+t}\\,dt', { at: 'inf' }).divergent).toBe(true);
+    expect(expansionOf('\\int_0^\\infty \\frac{e^{-t}}{x+t}\\,dt', { side: 'right' }).divergent).toBe(false);
+  });
+  it.each([['\\int_0^\\infty \\frac{1}{x+t}\\,dt'], ['\\int_0^\\infty \\frac{e^{t}}{x+t}\\,dt'], ['\\int_0^\\infty \\frac{e^{-t}}{t(x+t)}\\,dt'], ['\\int_0^\\infty \\frac{e^{-t}}{x-t}\\,dt']])('%s has no value', (formula) => {
+    expect(outcomeOf(latex(formula), { side: 'right' }).ok).toBe(false);
+  });
+});
+
+describe('logarithms at the end that matters', () => {
+  it.each([
+    // Gamma'(1) = -gamma: DLMF 5.4.12; Wong, Asymptotic Approximations of Integrals, ch. 2 (from memory).
+    ['\\int_0^\\infty e^{-x t}\\ln t\\,dt', '−ln(x)/x − γ/x'],
+    ['\\int_0^\\infty e^{-x t}\\ln^2 t\\,dt', 'ln²(x)/x + 2γ·ln(x)/x + (π² + 6γ²)/(6x)'],
+    // Compared with quadrature by mpmath 1.3.0 at x = 8 ... 170.
+    ['\\int_0^1 e^{-x t^2}\\ln(t)\\cos t\\,dt', '−√π·ln(x)/(4√x) − √π·(γ + 2ln(2))/(4√x) + √π·ln(x)/(16x^(3/2)) + √π·(γ + 2ln(2) − 2)/(16x^(3/2)) + O(ln(x)/x^(5/2))'],
+  ])('%s', (formula, expected) => {
+    expect(textOf(formula, 'inf')).toBe(expected);
+  });
+});

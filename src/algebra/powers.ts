@@ -10,7 +10,7 @@ import { monomialOf, multiplyMonomials, UNIT, type Monomial } from './monomial.t
 import { isOnePolynomial, kernelsIn, scalePolynomial, type Polynomial } from './polynomial.ts';
 import { addElements, elementFromMonomial, elementFromPolynomial, elementKey, invertElement, isQuotient, multiplyElements, negateElement, partsOf, scaleElement, wholePower } from './quotient.ts';
 import { positiveRationalPower, radicandPower } from './radicals.ts';
-import { isNonNegative, isRealSet, NEGATIVE, NIL, POSITIVE } from './signs.ts';
+import { isNonNegative, isNonZero, isRealSet, NEGATIVE, NIL, POSITIVE } from './signs.ts';
 import { additiveTerms, asElement, byImaginaryUnit, rationalMultiple, singleKernel } from './split.ts';
 import { squareFreeFactors } from './squareFree.ts';
 import { cosineOfPi, sineOfPi } from './unitCircle.ts';
@@ -267,7 +267,7 @@ function exponentialOfTerm(ctx: Context, term: Element): Element {
   return kernelElement(ctx, expKernel(ctx, unit), exponentFromRational(coefficient));
 }
 
-/** exp(i asin x), exp(i acos x), exp(i atan x), exp(asinh x), exp(acosh x), exp(atanh x) without the inverse function (DLMF 4.23(iv), 4.37(iv)); null for anything else. */
+/** exp(i asin x), exp(i acos x), exp(i atan x), exp(asinh x), exp(acosh x), exp(atanh x) without the inverse function (DLMF 4.23(iv), 4.37(iv)), and exp(W(z)) = z/W(z) for z other than 0 (DLMF 4.13.1); null for anything else. */
 function exponentialOfInverse(ctx: Context, m: Monomial, i: number): Element | null {
   const circular = m.kernels.length === 2 && m.kernels.includes(i);
   if ((!circular && m.kernels.length !== 1) || m.exponents.some((e) => e !== 1)) return null;
@@ -275,6 +275,8 @@ function exponentialOfInverse(ctx: Context, m: Monomial, i: number): Element | n
   const shape = index === undefined ? undefined : (ctx.table.kernels[index] as Kernel).shape;
   const x = shape?.kind === 'call' ? shape.args[0] : undefined;
   if (shape?.kind !== 'call' || x === undefined) return null;
+  const [, z] = shape.args;
+  if (shape.id === 'lambertW' && !circular && index !== undefined && z !== undefined && isNonZero(ctx.signs.of(z))) return divideElements(ctx, z, kernelElement(ctx, ctx.table.kernels[index] as Kernel));
   const unit = kernelElement(ctx, imaginaryKernel(ctx));
   const root = (a: Element): Element => rationalPower(ctx, a, Q.HALF);
   const square = times(ctx, x, x);

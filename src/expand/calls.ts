@@ -17,6 +17,8 @@ export function evaluateCall(s: Session, e: CallNode, evaluate: Evaluate): Multi
   const c = s.context;
   const size = logarithmOfSize(s, e, evaluate);
   if (size !== null) return size;
+  const gamma = logarithmOfGamma(s, e, evaluate);
+  if (gamma !== null) return gamma;
   const undone = inverseOfItself(s, e, evaluate);
   if (undone !== null) return undone;
   const args = e.args.map((a) => evaluate(s, a));
@@ -105,6 +107,17 @@ function logarithmOfSize(s: Session, e: CallNode, evaluate: Evaluate): Multi | n
   const u = evaluate(s, inner.args[0]);
   if (!(u instanceof Series) || !isRealMulti(s.context, u)) return null;
   return withExact(scaleBy(s.context, logarithm(s.context, multiply(s.context, u, u)), Q.HALF), () => build.call('log', build.call('abs', exactOf(s.context, u))));
+}
+
+/** log Gamma(u) for large positive u, as a function of its own: the logarithm of the product of Stirling's form would cancel in all its derivatives. */
+function logarithmOfGamma(s: Session, e: CallNode, evaluate: Evaluate): Multi | null {
+  const [inner] = e.args;
+  if (e.function !== 'log' || inner?.kind !== 'call' || (inner.function !== 'gamma' && inner.function !== 'factorial') || !inner.args[0]) return null;
+  const argument = inner.function === 'gamma' ? inner.args[0] : build.sum(inner.args[0], build.number(1));
+  const u = evaluate(s, argument);
+  const c = s.context;
+  if (!(u instanceof Series) || !isRealMulti(c, u) || growth(c, u) !== 'large' || eventualSign(c, u) !== 1) return null;
+  return withExact(evaluate(s, build.call('logGamma', argument)), () => build.call('log', build.call('gamma', exactOf(c, u))));
 }
 
 /** The same call of the same series is the same result. */

@@ -9,6 +9,7 @@ import { infiniteStarts } from './infinite.ts';
 import { polygonEdges } from './polygon.ts';
 import type { Start } from './start.ts';
 import { type Curve, separate, taylorAt } from './taylor.ts';
+import { isMonotone, lambertSolutions } from './transcendental.ts';
 import { zerosOf } from './zeros.ts';
 
 const MOST_DEGREE = 24;
@@ -26,10 +27,11 @@ export function startsOf(curve: Curve, near: Element | 1 | -1 | null, complex: b
   const atZero = tryTaylor(curve, Q.ZERO);
   if (atZero?.complete) return explore(curve, Q.ZERO, atZero.coefficients, null, complex, 0);
   const limits = finiteLimits(curve);
-  const finite = limits.flatMap((y) => atLimit(curve, y, complex));
+  const finite = limits.values.flatMap((y) => atLimit(curve, y, complex));
   const toZero = finite.some((s) => growth(c, s.value) === 'small');
   // Roots that tend to 0 are ends of the real line to `infiniteStarts` too.
   const found = [...finite, ...infiniteStarts(curve).filter((s) => !toZero || growth(c, s.value) !== 'small')];
+  if (!limits.complete) c.notes.assumptions.add(`other real roots may exist; name the value that ${curve.unknown} tends to`);
   return found.length > 0 ? found : explicitStart(curve);
 }
 
@@ -132,22 +134,51 @@ function onlySolution(curve: Curve, limit: Expression): Element | null {
   }
 }
 
-/** Finite values that roots can tend to: zeros of the leading coefficient of F at fixed y, where that is a polynomial; else 0 alone, if it is one. */
-function finiteLimits(curve: Curve): Element[] {
+/** Finite values that roots can tend to, and whether they are all. */
+interface Limits {
+  readonly values: readonly Element[];
+  readonly complete: boolean;
+}
+
+/** Zeros of the leading coefficient of F at fixed y, where that is a polynomial, is solved by Lambert's W, or takes each value once; else 0 alone, if it is one. */
+function finiteLimits(curve: Curve): Limits {
   const { context: c, session } = curve.side;
   const f = evaluate(session, curve.tree);
   const lead = monomialOf(c, f);
   if (!lead) throw new Declined('bad-request', 'The equation holds for every value of the unknown; correct it.');
-  if (!c.field.parameters(lead.constant).includes(curve.unknown)) return [];
+  if (!c.field.parameters(lead.constant).includes(curve.unknown)) return { values: [], complete: !hasPoles(curve) };
   const limit = c.field.toExpression(lead.constant);
   const inner = tryTaylor({ ...curve, tree: limit }, Q.ZERO);
   if (!inner?.complete) {
     const value = onlySolution(curve, limit);
-    if (value) return [value];
+    if (value) return { values: [value], complete: true };
+    const all = lambertSolutions(c, limit, curve.unknown) ?? zerosOfFactors(curve, limit);
+    if (all) return { values: all, complete: true };
   }
-  if (!inner) return [];
+  if (!inner) return { values: [], complete: false };
   const constants = inner.coefficients.map((a) => (a instanceof Series ? Q.ZERO : a));
   const zero: Element[] = constants[0] !== undefined && isZero(c, constants[0]) ? [Q.ZERO] : [];
-  if (!inner.complete) return zero;
-  return [...zero, ...zerosOf(c, constants, false).filter((z) => z.real).map((z) => z.value)];
+  if (!inner.complete) return { values: zero, complete: zero.length > 0 && isMonotone(c, limit, curve.unknown) };
+  return { values: [...zero, ...zerosOf(c, constants, false).filter((z) => z.real).map((z) => z.value)], complete: true };
+}
+
+/** All real zeros of a product whose factors are one to one each; null for anything else. */
+function zerosOfFactors(curve: Curve, limit: Expression): Element[] | null {
+  if (limit.kind !== 'product') return null;
+  const values = limit.factors.filter((f) => dependsOn(f, curve.unknown)).map((f) => onlySolution(curve, f));
+  return values.some((v) => v === null) ? null : values.flatMap((v) => v ?? []);
+}
+
+/** Functions without a pole or a singular end at a finite argument. */
+const WITHOUT_POLES = new Set(['exp', 'sin', 'cos', 'sinh', 'cosh', 'tanh', 'atan', 'asinh', 'erf', 'erfc', 'abs']);
+
+/** Whether the unknown may stay finite while the equation grows without bound, other than at 0. */
+function hasPoles(curve: Curve): boolean {
+  for (const node of walk(curve.tree)) {
+    if (!dependsOn(node, curve.unknown)) continue;
+    if (node.kind === 'call' && !WITHOUT_POLES.has(node.function) && !(['log', 'sqrt'].includes(node.function) && node.args[0]?.kind === 'symbol')) return true;
+    if (node.kind === 'quotient' && dependsOn(node.denominator, curve.unknown) && node.denominator.kind !== 'symbol') return true;
+    if (node.kind === 'power' && dependsOn(node.base, curve.unknown) && node.base.kind !== 'symbol' && !(node.exponent.kind === 'number' && Q.signOf(node.exponent.value) > 0)) return true;
+  }
+  return false;
 }

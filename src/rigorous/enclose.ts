@@ -5,7 +5,8 @@ import { type Arithmetic, ELEMENTARY, type ElementaryName, type RealArithmetic }
 import { ballArithmetic } from './ball-arithmetic.ts';
 import type { Ball, ComplexBall, Interval } from './ball.types.ts';
 import { arithmetic as complexBalls } from './complex.ts';
-import { complexArithmetic, type ComplexArithmetic, type Rectangle } from './complex-arithmetic.ts';
+import { complexArithmetic, type ComplexArithmetic } from './complex-arithmetic.ts';
+import type { Rectangle } from './complex-field.ts';
 import { fromBall, isFinite, toBall } from './interval.ts';
 import { intervalArithmetic } from './interval-arithmetic.ts';
 

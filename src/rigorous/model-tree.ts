@@ -1,9 +1,11 @@
 /** Local models of expression trees. */
-import { type Expression, type Rational, rationalOf } from '../expression/index.ts';
-import { build, dependsOn, freeSymbols, Q, sameExpression } from '../expression/index.ts';
-import type { ElementaryName, RealArithmetic } from './arithmetic.ts';
+import { build, dependsOn, type Expression, freeSymbols, Q, rationalOf, walk } from '../expression/index.ts';
+import type { RealArithmetic } from './arithmetic.ts';
 import { type EnclosableFunction, evaluateTree, isElementaryName, type TreeArithmetic } from './enclose.ts';
-import type { Model, ModelArithmetic } from './model.ts';
+import { logArithmetic, type LogModel } from './log-model.ts';
+import { realOperations } from './model-real.ts';
+import { growingExponent, joinedLogarithms, timesDecay } from './model-rewriting.ts';
+import type { Model, ModelArithmetic } from './model.types.ts';
 
 /** What models need of a function's description beyond enclosures. */
 export interface ModellableFunction extends EnclosableFunction {
@@ -31,9 +33,6 @@ export interface ModelTreeContext<T> {
   readonly deriving?: ReadonlySet<string>;
 }
 
-/** sum over j of (log s)^j times model j, on (0, 1]. */
-export type LogModel<T> = readonly Model<T>[];
-
 /** The local model of a tree without logarithms of s; null where it cannot be enclosed on the domain (a singularity inside, an unknown function). */
 export function modelOfTree<T>(e: Expression, context: ModelTreeContext<T>): Model<T> | null {
   const value = logModelOfTree(e, context);
@@ -45,6 +44,7 @@ export function logModelOfTree<T>(e: Expression, context: ModelTreeContext<T>): 
   const { m, trees, environment } = context;
   const logs = logArithmetic(m, context.real);
   const { a } = m;
+  const reals = realOperations(m, context.real);
   const known = new Map<Expression, LogModel<T> | null>();
   const varying = [...environment.keys()];
   const isConstant = (node: Expression): boolean => {
@@ -112,7 +112,7 @@ export function logModelOfTree<T>(e: Expression, context: ModelTreeContext<T>): 
       case 'root': {
         const degree = rationalOf(node.degree);
         const radicand = pure(visit(node.radicand));
-        return degree === null || radicand === null || !Q.isInteger(degree) || degree.num < 1n ? null : one(root(radicand, Number(degree.num)));
+        return degree === null || radicand === null || !Q.isInteger(degree) || degree.num < 1n ? null : one(reals.root(radicand, Number(degree.num)));
       }
       case 'call':
         return call(node.function, node.args, node);
@@ -208,16 +208,6 @@ export function logModelOfTree<T>(e: Expression, context: ModelTreeContext<T>): 
     }
     return total;
   };
-  const root = (radicand: Model<T>, degree: number): Model<T> | null => {
-    const q: Rational = { num: 1n, den: BigInt(degree) };
-    const lead = radicand.coefficients[0];
-    if (context.real && degree % 2 === 1 && lead !== undefined && context.real.isNegative(lead)) {
-      // The real root: on the left half line -(-u)^(1/n). A power of s that is not a whole multiple of n leaves no such form on both sides.
-      const value = m.powerRational(m.negate(radicand), q);
-      return value && m.negate(value);
-    }
-    return m.powerRational(radicand, q);
-  };
   const power = (base: Expression, exponent: Expression): LogModel<T> | null => {
     if (base.kind === 'constant' && base.name === 'e') {
       const value = visit(exponent);
@@ -259,51 +249,14 @@ export function logModelOfTree<T>(e: Expression, context: ModelTreeContext<T>): 
     }
     const [first] = models;
     if (first === undefined) return null;
-    if (id === 'abs' || id === 'sign') return one(signed(id, first));
-    if (id === 'max' || id === 'min') return one(extreme(id, models));
+    if (id === 'abs' || id === 'sign') return one(reals.signed(id, first));
+    if (id === 'max' || id === 'min') return one(reals.extreme(id, models));
     const described = context.describe?.(id);
-    if (id === 'atan2' && models[1]) return one(angle(first, models[1]));
+    if (id === 'atan2' && models[1]) return one(reals.angle(first, models[1]));
     if (described?.definition) return visit(described.definition(args));
     const rewritten = context.rewrite?.(id, args, models);
     if (rewritten) return visit(rewritten);
     return one(byDerivative(id, args, models, node) ?? context.call?.(id, args, models, isConstant) ?? null);
-  };
-  const signOnDomain = (f: Model<T>): 1 | -1 | null => {
-    const r = context.real;
-    if (r === null || f.coefficients.length === 0) return null;
-    // s^v keeps its sign for even v, and on [0, 1] for every v.
-    if (f.valuation % 2 !== 0 && !r.isNonNegative(m.domain)) return null;
-    return r.isPositive(f.range) ? 1 : r.isNegative(f.range) ? -1 : null;
-  };
-  const signed = (id: 'abs' | 'sign', f: Model<T>): Model<T> | null => {
-    const sign = signOnDomain(f);
-    if (sign === null) return null;
-    if (id === 'sign') return m.constant(a.fromInteger(sign));
-    return sign > 0 ? f : m.negate(f);
-  };
-  const extreme = (id: 'max' | 'min', models: readonly Model<T>[]): Model<T> | null => {
-    let best: Model<T> | null = null;
-    for (const candidate of models) {
-      if (best === null) {
-        best = candidate;
-        continue;
-      }
-      const sign = signOnDomain(m.subtract(candidate, best));
-      if (sign === null) return null;
-      if (sign > 0 === (id === 'max')) best = candidate;
-    }
-    return best;
-  };
-  const angle = (y: Model<T>, x: Model<T>): Model<T> | null => {
-    // In the right half plane atan(y/x); elsewhere the quarter turns are added where y keeps its sign.
-    if (signOnDomain(x) === 1) {
-      const quotient = m.divide(y, x);
-      return quotient && m.elementary('atan', quotient);
-    }
-    const sign = signOnDomain(y);
-    const quotient = sign === null ? null : m.divide(x, y);
-    const value = quotient === null ? null : m.elementary('atan', quotient);
-    return sign === null || value === null ? null : m.subtract(m.constant(a.multiply(a.fromInteger(sign), a.divideInteger(a.constant('pi'), 2))), value);
   };
 
   /** A function of one varying argument whose derivative can be modelled: f(u) = f(u(0)) + int f'(P) dP. */
@@ -333,365 +286,4 @@ export function logModelOfTree<T>(e: Expression, context: ModelTreeContext<T>): 
   return visit(e);
 }
 
-/** c log u - c log v as c log(u/v), wherever two terms of a sum go together so; null where none do. */
-function joinedLogarithms(terms: readonly Expression[]): Expression | null {
-  interface Part {
-    readonly negative: boolean;
-    readonly others: Expression;
-    readonly argument: Expression;
-  }
-  const partOf = (e: Expression): Part | null => {
-    if (e.kind === 'negation') {
-      const inner = partOf(e.operand);
-      return inner && { ...inner, negative: !inner.negative };
-    }
-    if (e.kind === 'call') return e.function === 'log' && e.args[0] ? { negative: false, others: build.number(1), argument: e.args[0] } : null;
-    if (e.kind !== 'product') return null;
-    const index = e.factors.findIndex((factor) => factor.kind === 'call' && factor.function === 'log');
-    const factor = e.factors[index];
-    if (factor?.kind !== 'call' || !factor.args[0]) return null;
-    let negative = false;
-    const others = e.factors.filter((_, k) => k !== index).map((other) => {
-      const minus = other.kind === 'number' && other.value.num < 0n;
-      if (minus) negative = !negative;
-      return other.kind === 'number' && minus ? build.number(Q.negate(other.value)) : other;
-    });
-    return { negative, others: build.product(...others.filter((other) => !build.isOneNumber(other))), argument: factor.args[0] };
-  };
-  const rest = [...terms];
-  for (const [i, one] of terms.entries()) {
-    const first = partOf(one);
-    if (!first) continue;
-    for (const other of terms.slice(i + 1)) {
-      const second = partOf(other);
-      if (!second || first.negative === second.negative || !sameExpression(first.others, second.others)) continue;
-      const [above, below] = first.negative ? [second, first] : [first, second];
-      const joined = build.product(first.others, build.call('log', build.quotient(above.argument, below.argument)));
-      return build.sum(joined, ...rest.filter((term) => term !== one && term !== other));
-    }
-  }
-  return null;
-}
-
-/** The argument of the first exponential in a sum of exponentials and other terms. */
-function growingExponent(e: Expression): Expression | null {
-  switch (e.kind) {
-    case 'sum':
-      return first(e.terms);
-    case 'product':
-      return first(e.factors);
-    case 'negation':
-      return growingExponent(e.operand);
-    case 'power':
-      return e.base.kind === 'constant' && e.base.name === 'e' ? e.exponent : null;
-    case 'call':
-      return ['exp', 'expm1', 'sinh', 'cosh'].includes(e.function) ? (e.args[0] ?? null) : null;
-    default:
-      return null;
-  }
-}
-function first(members: readonly Expression[]): Expression | null {
-  for (const member of members) {
-    const found = growingExponent(member);
-    if (found) return found;
-  }
-  return null;
-}
-
-/** e times e^-u with the growth of e^u, e^u - 1, sinh u, cosh u taken out. */
-function timesDecay(e: Expression, u: Expression, decay: Expression): Expression | null {
-  const half = build.number({ num: 1n, den: 2n });
-  const one = build.number(1);
-  const isThis = (x: Expression | undefined): boolean => x !== undefined && sameExpression(x, u);
-  switch (e.kind) {
-    case 'sum': {
-      const terms = e.terms.map((term) => timesDecay(term, u, decay));
-      return terms.every((term) => term !== null) ? build.sum(...terms) : null;
-    }
-    case 'negation': {
-      const inner = timesDecay(e.operand, u, decay);
-      return inner && build.negation(inner);
-    }
-    case 'product': {
-      const index = e.factors.findIndex((factor) => growingExponent(factor) !== null);
-      const factor = e.factors[index];
-      const inner = factor && timesDecay(factor, u, decay);
-      return factor === undefined ? build.product(e, decay) : (inner ?? null) && build.product(...e.factors.filter((_, k) => k !== index), inner ?? one);
-    }
-    case 'power':
-      if (e.base.kind === 'constant' && e.base.name === 'e' && isThis(e.exponent)) return one;
-      return build.product(e, decay);
-    case 'call': {
-      if (!isThis(e.args[0])) return build.product(e, decay);
-      const square = build.product(decay, decay);
-      if (e.function === 'exp') return one;
-      if (e.function === 'expm1') return build.difference(one, decay);
-      if (e.function === 'sinh') return build.product(half, build.difference(one, square));
-      return e.function === 'cosh' ? build.product(half, build.sum(one, square)) : build.product(e, decay);
-    }
-    default:
-      return build.product(e, decay);
-  }
-}
-
-interface LogArithmetic<T> {
-  add(f: LogModel<T>, g: LogModel<T>): LogModel<T>;
-  multiply(f: LogModel<T>, g: LogModel<T>): LogModel<T> | null;
-  each(f: LogModel<T>, map: (g: Model<T>) => Model<T> | null): LogModel<T> | null;
-  power(f: LogModel<T>, q: Rational): LogModel<T> | null;
-  elementary(name: ElementaryName, f: LogModel<T>): LogModel<T> | null;
-}
-
-/** Beyond this power of log s a model is refused. */
-const MOST_LOGS = 24;
-
-/** Enclosure of s^v (log s)^j on (0, 1]: the extreme is (j/(v e))^j, with the sign of (-1)^j; null for v <= 0 < j. */
-export function logPowerRange<T>(r: RealArithmetic<T>, v: number, j: number): T | null {
-  if (j === 0) return v === 0 ? r.one : v > 0 ? r.union(r.zero, r.one) : null;
-  if (v <= 0) return null;
-  const base = r.divide(r.fromInteger(j), r.multiply(r.fromInteger(v), r.constant('e')));
-  const extreme = base === null ? null : r.powerInteger(base, j);
-  if (extreme === null) return null;
-  return r.union(r.zero, j % 2 === 0 ? extreme : r.negate(extreme));
-}
-
-/** Enclosure over (0, 1]; null where a component does not vanish fast enough to tame its logarithm. */
-export function logRange<T>(r: RealArithmetic<T>, f: LogModel<T>): T | null {
-  let total = r.zero;
-  for (const [j, g] of f.entries()) {
-    if (g.coefficients.length === 0 && r.isZero(g.tail)) continue;
-    const weight = logPowerRange(r, g.valuation, j);
-    if (weight === null) return null;
-    total = r.add(total, r.multiply(weight, g.range));
-  }
-  return total;
-}
-
-function logArithmetic<T>(m: ModelArithmetic<T>, r: RealArithmetic<T> | null): LogArithmetic<T> {
-  const { a } = m;
-  const zeroModel = m.constant(a.zero);
-  const isNothing = (f: Model<T>): boolean => f.coefficients.length === 0 && a.isZero(f.tail);
-  const trim = (f: Model<T>[]): LogModel<T> => {
-    while (f.length > 1 && isNothing(f[f.length - 1] ?? zeroModel)) f.pop();
-    return f;
-  };
-  const at = (f: LogModel<T>, j: number): Model<T> => f[j] ?? zeroModel;
-  const add = (f: LogModel<T>, g: LogModel<T>): LogModel<T> => trim(Array.from({ length: Math.max(f.length, g.length) }, (_, j) => m.add(at(f, j), at(g, j))));
-  const multiply = (f: LogModel<T>, g: LogModel<T>): LogModel<T> | null => {
-    if (f.length === 1 && g.length === 1) return [m.multiply(at(f, 0), at(g, 0))];
-    if (f.length + g.length > MOST_LOGS) return null;
-    const result: Model<T>[] = Array.from({ length: f.length + g.length - 1 }, () => zeroModel);
-    for (let i = 0; i < f.length; i += 1) for (let j = 0; j < g.length; j += 1) result[i + j] = m.add(result[i + j] ?? zeroModel, m.multiply(at(f, i), at(g, j)));
-    return trim(result);
-  };
-  const each = (f: LogModel<T>, map: (g: Model<T>) => Model<T> | null): LogModel<T> | null => {
-    const result: Model<T>[] = [];
-    for (const g of f) {
-      const value = isNothing(g) ? zeroModel : map(g);
-      if (value === null) return null;
-      result.push(value);
-    }
-    return trim(result);
-  };
-
-  /**
-   * phi(g + d) = sum_(k<K) phi_k(g) d^k + phi_K(xi) d^K, phi_k = phi^(k)/k!, for d with logarithms that tends to zero: K makes the last part smaller than every coefficient kept.
-   * `derivative(k, x)` gives phi_k at a model, `range(k, x)` over a set.
-   */
-  const compose = (g: Model<T>, d: LogModel<T>, derivative: (k: number) => Model<T> | null, range: (k: number, over: T) => T | null): LogModel<T> | null => {
-    if (r === null) return null;
-    const least = Math.min(...d.filter((f) => !isNothing(f)).map((f) => f.valuation));
-    const base = m.rangeOf(g);
-    const spread = logRange(r, d);
-    if (!(least > 0) || base === null || spread === null) return null;
-    const count = Math.min(12, Math.max(2, Math.ceil(m.length / least)));
-    let total: LogModel<T> = [zeroModel];
-    let power: LogModel<T> = [m.constant(a.one)];
-    for (let k = 0; k < count; k += 1) {
-      const factor = derivative(k);
-      const term = factor && multiply([factor], power);
-      const next = multiply(power, d);
-      if (term === null || next === null) return null;
-      total = add(total, term);
-      power = next;
-    }
-    const last = range(count, a.union(base, a.add(base, spread)));
-    if (last === null) return null;
-    return add(total, power.map((f) => (isNothing(f) ? f : { valuation: f.valuation, coefficients: [], tail: a.multiply(last, f.range), range: a.multiply(last, f.range) })));
-  };
-  const split = (f: LogModel<T>): readonly [Model<T>, LogModel<T>] => [at(f, 0), [zeroModel, ...f.slice(1)]];
-  const factorial = (k: number): number => {
-    let value = 1;
-    for (let i = 2; i <= k; i += 1) value *= i;
-    return value;
-  };
-  const over = (x: T | null, n: number): T | null => (x === null ? null : a.divideInteger(x, n));
-  const shift = (f: Model<T>, by: number): Model<T> => (isNothing(f) ? f : { ...f, valuation: f.valuation + by });
-
-  const power = (f: LogModel<T>, q: Rational): LogModel<T> | null => {
-    if (f.length === 1) {
-      const value = m.powerRational(at(f, 0), q);
-      return value === null ? null : [value];
-    }
-    if (q.den === 1n && q.num > 0n && q.num <= 8n) {
-      let result: LogModel<T> | null = f;
-      for (let k = 1n; k < q.num && result !== null; k += 1n) result = multiply(result, f);
-      return result;
-    }
-    const [g, d] = split(f);
-    const v = g.valuation;
-    const lead = Number(q.num) * v;
-    if (isNothing(g) || lead % Number(q.den) !== 0) return null;
-    const [g0, d0] = [shift(g, -v), d.map((x) => shift(x, -v))];
-    const exponent = a.fromRational(q);
-    let binomial = a.one;
-    const binomials: T[] = [binomial];
-    for (let k = 1; k <= MOST_LOGS; k += 1) {
-      binomial = a.divideInteger(a.multiply(binomial, a.subtract(exponent, a.fromInteger(k - 1))), k);
-      binomials.push(binomial);
-    }
-    const lowered = (k: number): Rational => ({ num: q.num - BigInt(k) * q.den, den: q.den });
-    const value = compose(
-      g0,
-      d0,
-      (k) => {
-        const raised = m.powerRational(g0, lowered(k));
-        return raised && m.scale(raised, binomials[k] ?? a.zero);
-      },
-      (k, x) => {
-        const raised = a.powerRational(x, lowered(k));
-        return raised === null ? null : a.multiply(raised, binomials[k] ?? a.zero);
-      },
-    );
-    return value && value.map((x) => shift(x, lead / Number(q.den)));
-  };
-
-  /** The integer c of a term c log s without further factor: e^(c log s) = s^c. */
-  const wholePower = (f: LogModel<T>): number => {
-    const term = at(f, 1);
-    const lead = term.coefficients[0];
-    if (r === null || isNothing(term) || term.valuation !== 0 || lead === undefined) return 0;
-    const floor = r.floor(r.midpoint(lead));
-    return floor !== null && a.isZero(a.subtract(lead, a.fromInteger(floor))) ? Number(floor) : 0;
-  };
-  /** asinh, acosh and log1p of an argument that grows without bound: by the logarithm. */
-  const logarithmic = (name: ElementaryName, f: Model<T>): LogModel<T> | null => {
-    if (r === null || !r.isNonNegative(m.domain)) return null;
-    if (name === 'log1p') return elementary('log', [m.add(m.constant(a.one), f)]);
-    const negative = r.isNegative(f.range);
-    if (!negative && !r.isPositive(f.range)) return null;
-    if (name !== 'asinh' && (name !== 'acosh' || negative)) return null;
-    const u = negative ? m.negate(f) : f;
-    const square = m.multiply(u, u);
-    const root = m.powerRational(m.add(square, m.constant(a.fromInteger(name === 'asinh' ? 1 : -1))), { num: 1n, den: 2n });
-    const value = root && elementary('log', [m.add(u, root)]);
-    return value && negative ? value.map((x) => m.negate(x)) : value;
-  };
-  const elementary = (name: ElementaryName, f: LogModel<T>): LogModel<T> | null => {
-    if (f.length === 1) {
-      const only = at(f, 0);
-      if (name === 'log' && only.valuation !== 0) {
-        // log(s^v g) = v log s + log g, s in (0, 1].
-        if (r === null || !r.isNonNegative(m.domain)) return null;
-        const rest = m.elementary('log', shift(only, -only.valuation));
-        return rest && [rest, m.constant(a.fromInteger(only.valuation))];
-      }
-      const value = m.elementary(name, only) ?? m.elementaryAtInfinity(name, only);
-      if (value !== null) return [value];
-      return only.valuation < 0 ? logarithmic(name, only) : null;
-    }
-    const whole = name === 'exp' ? wholePower(f) : 0;
-    if (whole !== 0) {
-      const value = elementary('exp', add(f, [zeroModel, m.constant(a.fromInteger(-whole))]));
-      return value && value.map((x) => shift(x, whole));
-    }
-    const [g, d] = split(f);
-    switch (name) {
-      case 'exp':
-      case 'expm1': {
-        const e = m.elementary('exp', g);
-        const value = e && compose(g, d, (k) => m.scale(e, a.divideInteger(a.one, factorial(k))), (k, x) => over(a.exp(x), factorial(k)));
-        return value && name === 'expm1' ? add(value, [m.constant(a.fromInteger(-1))]) : value;
-      }
-      case 'log': {
-        const v = g.valuation;
-        if (isNothing(g)) return null;
-        const [g0, d0] = [shift(g, -v), d.map((x) => shift(x, -v))];
-        const inverse = m.powerInteger(g0, -1);
-        const value = compose(
-          g0,
-          d0,
-          (k) => {
-            if (k === 0) return m.elementary('log', g0);
-            const raised = inverse && m.powerInteger(inverse, k);
-            return raised && m.scale(raised, a.divideInteger(a.fromInteger(k % 2 === 1 ? 1 : -1), k));
-          },
-          (k, x) => {
-            const raised = a.powerInteger(x, -k);
-            return raised === null ? null : a.divideInteger(k % 2 === 1 ? raised : a.negate(raised), k);
-          },
-        );
-        return value && (v === 0 ? value : add(value, [zeroModel, m.constant(a.fromInteger(v))]));
-      }
-      case 'sqrt':
-        return power(f, { num: 1n, den: 2n });
-      case 'sin':
-      case 'cos': {
-        // Derivatives run through sin, cos, -sin, -cos.
-        const [s, c] = [m.elementary('sin', g), m.elementary('cos', g)];
-        if (s === null || c === null) return null;
-        const start = name === 'sin' ? 0 : 1;
-        const cycle = [s, c, m.negate(s), m.negate(c)];
-        const ranges = (x: T): readonly (T | null)[] => {
-          const [u, w] = [a.sin(x), a.cos(x)];
-          return [u, w, u === null ? null : a.negate(u), w === null ? null : a.negate(w)];
-        };
-        return compose(
-          g,
-          d,
-          (k) => m.scale(cycle[(start + k) % 4] ?? s, a.divideInteger(a.one, factorial(k))),
-          (k, x) => over(ranges(x)[(start + k) % 4] ?? null, factorial(k)),
-        );
-      }
-      case 'tan': {
-        const [s, c] = [elementary('sin', f), elementary('cos', f)];
-        const inverse = c && power(c, { num: -1n, den: 1n });
-        return s && inverse && multiply(s, inverse);
-      }
-      case 'sinh':
-      case 'cosh':
-      case 'tanh': {
-        const e = elementary('exp', f);
-        const back = elementary('exp', f.map((x) => m.negate(x)));
-        const half = a.divideInteger(a.one, 2);
-        if (e === null || back === null) return null;
-        const s = add(e, back.map((x) => m.negate(x))).map((x) => m.scale(x, half));
-        const c = add(e, back).map((x) => m.scale(x, half));
-        if (name !== 'tanh') return name === 'sinh' ? s : c;
-        const inverse = power(c, { num: -1n, den: 1n });
-        return inverse && multiply(s, inverse);
-      }
-      case 'log1p':
-        return elementary('log', add([m.constant(a.one)], f));
-      default:
-        return null;
-    }
-  };
-  return { add, multiply, each, power, elementary };
-}
-
-function mentions(e: Expression, id: string): boolean {
-  const stack: Expression[] = [e];
-  for (let node = stack.pop(); node !== undefined; node = stack.pop()) {
-    if (node.kind === 'call') {
-      if (node.function === id) return true;
-      stack.push(...node.args);
-    } else if (node.kind === 'sum') stack.push(...node.terms);
-    else if (node.kind === 'product') stack.push(...node.factors);
-    else if (node.kind === 'quotient') stack.push(node.numerator, node.denominator);
-    else if (node.kind === 'negation') stack.push(node.operand);
-    else if (node.kind === 'power') stack.push(node.base, node.exponent);
-    else if (node.kind === 'root') stack.push(node.radicand);
-  }
-  return false;
-}
+const mentions = (e: Expression, id: string): boolean => [...walk(e)].some((node) => node.kind === 'call' && node.function === id);

@@ -1,6 +1,6 @@
 /** The formulas of a document that may hold claims: mathematics, Markdown, comments of code, plain lines. */
 import { type Expression, type Span, walk } from '../expression/index.ts';
-import { type DocumentContent, type Formula, type MacroTable, readDocument, readFormula, type Region } from '../read/index.ts';
+import { type DocumentContent, type Formula, languageOf, type MacroTable, readDocument, readFormula, type Region } from '../read/index.ts';
 import { type CheckMemory, macrosUsed, movedTree } from './memory.ts';
 
 export interface PlacedFormula {
@@ -74,9 +74,18 @@ export function formulasOf(text: string, language: string, options: { readonly f
     else if (region.kind === 'text') for (const place of proseFormulas(text, region.contentStart, region.contentEnd)) read(place, 'plain', true, null, true);
     else for (const place of region.formulas) read({ start: place.start, end: place.end }, region.language === 'plain' ? 'plain' : 'latex', region.kind === 'inline', place.label ?? region.label ?? place.tag ?? region.tag ?? null, false);
   }
-  if (found.length === 0 && unread.length === 0 && content.regions.length === 0 && text.trim() !== '') read({ start: 0, end: endOfFormula(text) }, language === 'plain' && !text.includes('\\') ? 'plain' : 'latex', false, null, false);
+  if (found.length === 0 && unread.length === 0 && content.regions.length === 0 && text.trim() !== '' && !(isCode(language, options.fileName) && text.trim().includes('\n'))) {
+    const whole = { start: 0, end: endOfFormula(text) };
+    const notation = language === 'plain' && !text.includes('\\') ? 'plain' : 'latex';
+    // Running text of which only a stretch is a formula.
+    if (!read(whole, notation, false, null, true)) for (const place of language === 'latex' ? [] : proseFormulas(text, 0, text.length)) read({ start: place.start, end: place.end }, place.notation, true, null, true, place.source);
+    if (found.length === 0) read(whole, notation, false, null, false);
+  }
   return { found, unread, content };
 }
+
+/** A program of several lines is no formula. */
+const isCode = (language: string, fileName: string | undefined): boolean => languageOf(language, fileName).reader === 'code';
 
 /** Where words go on behind a formula that stands alone: `... as x \to \infty`. Only behind a relation, and outside of braces. */
 function endOfFormula(text: string): number {
@@ -118,12 +127,21 @@ interface Place extends Span {
 function commentFormulas(text: string, region: Region): readonly Place[] {
   const out: Place[] = [];
   const content = text.slice(region.contentStart, region.contentEnd);
-  for (const match of content.matchAll(/\$\$([\s\S]+?)\$\$|\$([^$\n]+)\$|\\\(([\s\S]+?)\\\)|\\\[([\s\S]+?)\\\]|\\f\$([^\n]+?)\\f\$/g)) {
+  for (const match of content.matchAll(/\$\$([\s\S]+?)\$\$|\$([^$\n]+)\$|\\\(([\s\S]+?)\\\)|\\\[([\s\S]+?)\\\]|\\f\$([^\n]+?)\\f\$|:math:`([^`]+)`/g)) {
     const inner = match.slice(1).find((g) => g !== undefined) ?? '';
     const start = region.contentStart + match.index + match[0].indexOf(inner);
     out.push({ start, end: start + inner.length, notation: 'latex' });
   }
   return out.length > 0 ? out : proseFormulas(text, region.contentStart, region.contentEnd);
+}
+
+/** Marks of documentation around what is said: code in backquotes or `{@code ...}`, tags such as `<summary>`, bold and list marks. They become spaces, so that offsets stay. */
+const DRESSING = /`+|\{@(?:code|literal|link)\s|(?<=\{@(?:code|literal|link)\s[^{}]*)\}|<\/?(?:[a-z][a-z\d]*)(?:\s[^<>\n]*)?\/?>|(?<=^|\s)\*\*(?=\S)|(?<=\S)\*\*(?=[\s.,;:]|$)|@(?:brief|details|note|return|returns|remarks?|approx)\b|\\(?:brief|details|note|returns?|remark)\b|(?<![\w.])(?:Math|math|np|numpy|std::|Mathf|MathF)(?:\.(?=[a-z])|(?<=::)(?=[a-z]))/g;
+
+function undressed(text: string, from: number, to: number): string {
+  const piece = text.slice(from, to);
+  const plain = piece.replace(DRESSING, (mark) => ' '.repeat(mark.length));
+  return plain === piece ? text : text.slice(0, from) + plain + text.slice(to);
 }
 
 const RELATION = /~=|≈|∼|≃|(?<![<>=!:+\-*/])=(?!=)|\\approx|\\sim(?:eq)?(?![a-z])|(?<=\s)~(?=\s)/;
@@ -132,7 +150,8 @@ const RELATION = /~=|≈|∼|≃|(?<![<>=!:+\-*/])=(?!=)|\\approx|\\sim(?:eq)?(?
 const WORDS_AFTER = /\s(?:for|when|where|if|with|near|around|which|so|and|using|gives?|since|because|valid|while|within|accurate|correct|to avoid|to within|better than|on|is|has)\s/;
 
 /** In each line with a relation, the longest stretch that is a formula; lines that start with a relation or a sign go on with the one before. */
-function proseFormulas(text: string, from: number, to: number): readonly Place[] {
+function proseFormulas(written: string, from: number, to: number): readonly Place[] {
+  const text = undressed(written, from, to);
   const out: Place[] = [];
   const lines: Span[] = [];
   for (let start = from; start < to; ) {
@@ -147,7 +166,7 @@ function proseFormulas(text: string, from: number, to: number): readonly Place[]
     while (lines[last + 1] && last - i < MOST_JOINED && CONTINUES.test(text.slice(lines[last + 1]?.start, lines[last + 1]?.end))) last += 1;
     const joined = last > i ? joinedSource(text, lines.slice(i, last + 1)) : text;
     const place = formulaInLine(joined, first.start, lines[last]?.end ?? first.end) ?? (last > i ? formulaInLine(text, first.start, first.end) : null);
-    if (place) out.push(joined === text ? place : { ...place, source: joined });
+    if (place) out.push(joined === written ? place : { ...place, source: joined });
     i = last;
   }
   return out;
@@ -172,7 +191,7 @@ function formulaInLine(text: string, start: number, end: number): Place | null {
   const relation = RELATION.exec(line);
   if (!relation || line.length > 2000) return null;
   const notation = line.includes('\\') ? 'latex' : 'plain';
-  const lead = /^[\s*/!#%;>]*(?:-\s+)?/.exec(line)?.[0].length ?? 0;
+  const lead = /^[\s*/!#%;>]*(?:(?:-|\d+[.)])\s+)?/.exec(line)?.[0].length ?? 0;
   const starts = [lead, ...[...line.slice(lead, relation.index).matchAll(/[:;,]\s+|\s+|(?<=\w)\(/g)].map((m) => lead + m.index + m[0].length)];
   const words = WORDS_AFTER.exec(line.slice(relation.index));
   const ends = words ? [start + relation.index + words.index, end] : [end];
@@ -195,5 +214,7 @@ const ENGLISH = /^(?:the|errors?|formula|approximations?|approximate|use|expansi
 /** Words of running text that were read as symbols. */
 function isWordy(e: Expression, text: string): boolean {
   const words = [...walk(e)].filter((n) => (n.kind === 'symbol' || n.kind === 'apply') && /^[A-Za-z]{3,}$/.test(n.name) && n.span && /^[A-Za-z]{3,}$/.test(text.slice(n.span.start, n.span.start + n.name.length)));
-  return words.length > 1 || words.some((n) => (n.kind === 'symbol' || n.kind === 'apply') && ENGLISH.test(n.name));
+  const [first] = words;
+  const leads = e.span && first?.span?.start === e.span.start && /^[A-Za-z]+\s+[A-Za-z(\\]/.test(text.slice(first.span.start, first.span.start + 60)) && !first.name.startsWith('\\');
+  return leads === true || words.length > 1 || words.some((n) => (n.kind === 'symbol' || n.kind === 'apply') && ENGLISH.test(n.name));
 }

@@ -95,7 +95,10 @@ describe('comments', () => {
   it.each([
     ['c', 'a; // one\ns = "// no"; /* two\n three */ x', [' one', ' two\n three ']],
     ['rust', '/* a /* b */ c */ x // d', [' a /* b */ c ', ' d']],
-    ['python', 's = "# no" # yes\n"""\n# in a string\n"""', [' yes']],
+    ['python', 's = "# no" # yes\nt = """\n# in a string\n"""', [' yes']],
+    ['python', 'def f():\n    r"""What # it does."""\n    return "# no"', ['What # it does.']],
+    ['python', "class A:\n    'In one line.'\n    x = {\n    'not one'\n    }", ['In one line.']],
+    ['julia', '"""\n  f(x)\n"""\nf(x) = "# no"', ['\n  f(x)\n']],
     ['fortran', "s = 'it''s ! no' ! yes", [' yes']],
     ['matlab', "y = x'; % one\n%{\nblock\n%}", [' one', '\nblock\n']],
     ['julia', 'x #= a =# y # b', [' a ', ' b']],

@@ -1,4 +1,4 @@
-/** Comments of a document by the language's table: positions of their words, strings skipped. Linear in the text. */
+/** Comments of a document by the language's table, strings that document code among them: positions of their words, other strings skipped. Linear in the text. */
 import type { Language, StringRule } from '../languages.ts';
 
 /** A comment. `contentStart` to `contentEnd` is what stands between its signs. */
@@ -49,9 +49,30 @@ export function findComments(text: string, language: Language): readonly Comment
       i = end;
       continue;
     }
-    i = string ? stringEnd(text, i, string) : i + 1;
+    if (!string) {
+      i += 1;
+      continue;
+    }
+    const end = stringEnd(text, i, string);
+    if (DOCUMENTED.has(language.id) && isDocumentation(text, i, string, end)) {
+      const closed = end - string.close.length >= i + string.open.length && text.startsWith(string.close, end - string.close.length);
+      out.push({ start: i, end, contentStart: i + string.open.length, contentEnd: closed ? end - string.close.length : end, block: true });
+    }
+    i = Math.max(end, i + 1);
   }
   return out;
+}
+
+/** Languages in which a string that stands alone as a statement documents what it belongs to. */
+const DOCUMENTED: ReadonlySet<string> = new Set(['python', 'julia']);
+
+/** A string alone on its lines: with threefold signs anywhere, with single ones at the head of the file or of a body. */
+function isDocumentation(text: string, start: number, rule: StringRule, end: number): boolean {
+  const lineStart = text.lastIndexOf('\n', start - 1) + 1;
+  if (!/^\s*[rRuU]?$/.test(text.slice(lineStart, start)) || !/^[ \t]*\r?(?:\n|$)/.test(text.slice(end, end + 200))) return false;
+  if (rule.open.length === 3) return !/[=(,[{+\\]\s*$/.test(text.slice(Math.max(0, lineStart - 200), lineStart));
+  const before = text.slice(Math.max(0, lineStart - 400), lineStart).trimEnd();
+  return before === '' || /^[ \t]*(?:(?:async[ \t]+)?def|class)\b[^\n]*:$|\)[^\n]*:$/m.test(before.slice(before.lastIndexOf('\n') + 1));
 }
 
 function endAfter(text: string, sign: string, from: number): number {

@@ -9,7 +9,7 @@ import { engineLanguage, isCode, SELECTOR } from './languages.ts';
 import { commandLink, escapeMarkdown, table } from './markdown.ts';
 import type { PlaceLink, Services } from './services.ts';
 import { settingsFor } from './settings.ts';
-import { limitText, plainSymbol, said, sourcesText } from './words.ts';
+import { limitText, plainSymbol, said, saidEach, sourcesText } from './words.ts';
 
 const DEADLINE_MS = 300;
 const PICTURE_DEADLINE_MS = 150;
@@ -100,7 +100,7 @@ function render(document: vscode.TextDocument, consultation: Consultation, selec
   head.appendMarkdown(`\n\n${escapeMarkdown(answer.text.length > LONGEST_LINE ? `${answer.text.slice(0, LONGEST_LINE)} …` : answer.text)}`);
   if (answer.left) head.appendMarkdown(`\n\n${escapeMarkdown(vscode.l10n.t('From the left: {0}', answer.left.text))}`);
   head.appendMarkdown(`\n\n${figures(answer, consultation)}`);
-  if (consultation.unbounded !== undefined) head.appendMarkdown(`\n\n${escapeMarkdown(said(consultation.unbounded))}`);
+  if (consultation.unbounded !== undefined) head.appendMarkdown(`\n\n${escapeMarkdown(saidEach(consultation.unbounded))}`);
   const foot = trusted();
   foot.appendMarkdown(links(link, answer));
   const contents = picture ? [head, picture, foot] : [head, foot];
@@ -158,7 +158,7 @@ function neededText(answer: ExpandAnswer): string {
   if (!needed) return '–';
   if (needed.terms !== null) return needed.bound ? `${needed.terms} (${vscode.l10n.t('bound {0}', shortened(needed.bound, 'above'))})` : String(needed.terms);
   const reach = needed.reach ? ` ${vscode.l10n.t('It can be kept up to a distance of {0}.', shortened(needed.reach.distance, 'below'))}` : '';
-  return `${vscode.l10n.t('no number of terms does: {0}', needed.reason ?? '')}${reach}`;
+  return `${vscode.l10n.t('no number of terms does: {0}', saidEach(needed.reason ?? ''))}${reach}`;
 }
 
 function links(link: PlaceLink, answer: ExpandAnswer): string {

@@ -1,39 +1,23 @@
 /** One Expansion page: what it is about, what it shows, and what its buttons do. The view and the editor tab are both such pages. */
 import * as vscode from 'vscode';
-import type { CheckAnswer, Detail, ErrorAnswer, FitAnswer, FitRequest, GuardAnswer } from '../protocol.ts';
-import type { CodeControls, CopyKind, FromPage, HistoryEntry, Kept, Mode, PageState, Shown, ToPage } from '../webview/messages.ts';
+import type { CheckAnswer, Detail, FitAnswer, GuardAnswer } from '../protocol.ts';
+import type { CodeControls, CopyKind, FromPage, Kept, Mode, PageState, Shown, ToPage } from '../webview/messages.ts';
 import type { Place, Proposal, ProposalKind, Question, TextEdit } from '../worker/desk/types.ts';
-import { proposalTitle, withoutOverlap } from './actions.ts';
+import { proposalTitle } from './actions.ts';
 import { type Consultation, selectionOf } from './consultant.ts';
 import { applyChecked, groundOf, rangeOf, sayMovedOn } from './edits.ts';
-import { countsOf } from './problems.ts';
-import { countsText } from './status.ts';
 import { engineLanguage, isCode, serves } from './languages.ts';
-import { requestCommand } from './requestCommand.ts';
+import { claimsPage } from './pageClaims.ts';
+import { argumentsOf, EMPTY_FORM, emptyForm, type FormMode, formRequest, prefilled, renewed } from './pageForms.ts';
+import { type Focus, movedAlong, placeAgain, type Remembered, withRemembered } from './pageHistory.ts';
+import { codeSaid, copied, expansionSaid } from './pageSaid.ts';
 import type { Services } from './services.ts';
-import { settingsFor } from './settings.ts';
-import { said, shorten, sourceName } from './words.ts';
+import { said, saidEach, shorten, sourceName } from './words.ts';
 
 const DETAILS: readonly Detail[] = ['reading', 'ladder', 'reach', 'plot'];
 const FOLLOW_PAUSE_MS = 250;
-/** Fits and guards are asked for by hand and may take longer than a hover. */
-const LEAST_CODE_BUDGET_MS = 20_000;
-const HISTORY_LENGTH = 12;
 /** Controls that hold for every expression; the others are about one. */
 const LASTING: readonly (keyof Question)[] = ['interval', 'tolerance', 'measure'];
-
-/** Calls that are fitted in two variables. */
-const OF_TWO = /hypot|a(?:rc)?tan2|sqrt/i;
-
-interface Focus {
-  readonly uri: vscode.Uri;
-  readonly place: Place;
-  readonly text: string;
-}
-interface Remembered extends HistoryEntry {
-  readonly focus: Focus;
-  readonly chosen: Question;
-}
 
 export class Page implements vscode.Disposable {
   readonly #services: Services;
@@ -45,7 +29,7 @@ export class Page implements vscode.Disposable {
   #focus: Focus | null = null;
   #chosen: Question = {};
   #mode: Mode = 'expand';
-  #controls: CodeControls = { form: 0, from: '', to: '', tolerance: '1e-6', measure: 'absolute', format: '', point: '0', variable: '', second: '', secondFrom: '', secondTo: '', reduction: 'auto', words: '', assertion: false };
+  #controls: CodeControls = EMPTY_FORM;
   #pinned = false;
   #shown: Shown = { kind: 'nothing' };
   #consultation: Consultation | null = null;
@@ -92,34 +76,19 @@ export class Page implements vscode.Disposable {
     await this.#refresh();
   }
 
-  #emptyForm(): Shown {
-    return this.#mode === 'guard' ? { kind: 'guard', answer: null, controls: this.#controls } : { kind: 'fit', answer: null, controls: this.#controls };
-  }
-
-  /** What notes, memory and settings say about the expression fills the form; what is not said stays empty. */
+  /** The form comes at once, without what was said of another expression; what is known about this one follows. */
   async #prefill(document: vscode.TextDocument, place: Place): Promise<void> {
-    // The form comes at once, without what was said of another expression; what is known about this one follows.
-    this.#controls = { ...this.#controls, form: this.#controls.form + 1, from: '', to: '', point: '0', variable: '', second: '', secondFrom: '', secondTo: '' };
+    this.#controls = renewed(this.#controls);
     const { form } = this.#controls;
-    this.#shown = this.#emptyForm();
+    this.#shown = emptyForm(this.#formMode, this.#controls);
     this.#proposals = [];
     this.#post();
-    const { answer, asked, candidates } = await this.#services.consultant.consult(document, place, ['reading']);
-    if (form !== this.#controls.form) return;
-    const reading = answer.ok ? answer.reading : undefined;
-    const [from, to] = asked.interval ?? ['', ''];
-    const [first, other] = candidates;
-    const pair = candidates.length === 2 && OF_TWO.test(this.#focus?.text ?? '');
-    this.#controls = {
-      ...this.#controls,
-      from,
-      to,
-      tolerance: asked.tolerance ?? '1e-6',
-      measure: asked.measure ?? 'absolute',
-      point: reading?.point ?? asked.point ?? '0',
-      variable: reading?.variable ?? asked.variable ?? (candidates.length === 1 || pair ? (first ?? '') : ''),
-      second: pair ? (other ?? '') : '',
-    };
+    const consultation = await this.#services.consultant.consult(document, place, ['reading']);
+    if (form === this.#controls.form) this.#controls = prefilled(this.#controls, consultation, this.#focus?.text ?? '');
+  }
+
+  get #formMode(): FormMode {
+    return this.#mode === 'guard' ? 'guard' : 'fit';
   }
 
   /** Turns the page to all claims of a document, as a check found them. */
@@ -131,22 +100,10 @@ export class Page implements vscode.Disposable {
     this.#ground = document.version;
     this.#focus ??= { uri: document.uri, place: { start: 0, end: 0 }, text: '' };
     if (this.#focus.uri.toString() !== document.uri.toString()) this.#focus = { uri: document.uri, place: { start: 0, end: 0 }, text: '' };
-    const text = document.getText();
-    this.#claims = answer.findings.map(({ start, end }) => ({ start, end }));
-    const fixes = withoutOverlap(answer.findings.flatMap((finding) => (finding.verdict === 'fails' && finding.fix ? [finding.fix] : [])));
-    this.#proposals = fixes.length === 0 ? [] : [{ kind: 'corrections', preview: String(fixes.length), edits: fixes }];
-    this.#shown = {
-      kind: 'claims',
-      summary: countsText(countsOf(answer)),
-      rows: answer.findings.map((finding) => ({
-        line: document.positionAt(finding.start).line + 1,
-        label: finding.label ?? '',
-        claim: text.slice(finding.claim.start, finding.claim.end).replace(/\s+/g, ' ').trim(),
-        verdict: finding.verdict,
-        reason: said(finding.reason),
-        found: finding.found,
-      })),
-    };
+    const { places, proposals, shown } = claimsPage(document, answer);
+    this.#claims = places;
+    this.#proposals = proposals;
+    this.#shown = shown;
     this.#post();
   }
 
@@ -263,21 +220,14 @@ export class Page implements vscode.Disposable {
     const changes = this.#changes;
     this.#changes = [];
     if (!focus || document.isClosed) return;
-    let { start, end } = focus.place;
-    let touched = false;
-    for (const { rangeOffset, rangeLength, text } of changes) {
-      if (rangeOffset + rangeLength <= start) {
-        start += text.length - rangeLength;
-        end += text.length - rangeLength;
-      } else if (rangeOffset < end) touched = true;
-    }
-    if (touched || document.getText(rangeOf(document, start, end)) !== focus.text) {
+    const place = movedAlong(focus.place, changes);
+    if (!place || document.getText(rangeOf(document, place.start, place.end)) !== focus.text) {
       this.#stale = vscode.l10n.t('The text has changed since.');
       this.#proposals = [];
       this.#post();
       return;
     }
-    this.#focus = { ...focus, place: { start, end } };
+    this.#focus = { ...focus, place };
     this.#outdated = !this.#isVisible();
     if (!this.#outdated) void this.#refresh().catch((error: unknown) => this.#services.log.error('page', error));
   }
@@ -336,42 +286,24 @@ export class Page implements vscode.Disposable {
     }
     if (consultation.place) this.#focus = { uri: document.uri, place: consultation.place, text: document.getText(rangeOf(document, consultation.place.start, consultation.place.end)) };
     const origins = { variable: sourceName(sources.variable), point: sourceName(sources.point), interval: sourceName(sources.interval), tolerance: sourceName(sources.tolerance), terms: sourceName(sources.terms) };
-    this.#shown = { kind: 'expansion', answer, asked, sources, origins, ...(unbounded === undefined ? {} : { unbounded: said(unbounded) }) };
-    this.#remember(answer.text);
+    this.#shown = { kind: 'expansion', answer: expansionSaid(answer), asked, sources, origins, ...(unbounded === undefined ? {} : { unbounded: saidEach(unbounded) }) };
+    if (this.#focus) this.#history = withRemembered(this.#history, this.#focus, answer.text, this.#chosen);
   }
 
   async #computeCode(document: vscode.TextDocument, focus: Focus, turn: number, signal: AbortSignal): Promise<void> {
     const { version } = document;
     const controls = this.#controls;
-    const mode = this.#mode === 'guard' ? 'guard' : 'fit';
-    const interval = controls.from !== '' && controls.to !== '' ? ([controls.from, controls.to] as const) : null;
-    let answer: FitAnswer | GuardAnswer | ErrorAnswer | null = null;
-    const language = engineLanguage(document);
-    const settings = settingsFor(document);
-    const { place } = focus;
-    const text = document.getText();
-    const common = {
-      text,
-      files: await this.#services.companions.of({ uri: document.uri, text, language }),
-      selection: place,
-      language,
-      emit: language === 'plain' || !isCode(language) ? 'c' : language,
-      budget_ms: Math.max(settings.budget, LEAST_CODE_BUDGET_MS),
-      ...(controls.format === '' ? {} : { format: controls.format }),
-      ...(controls.variable === '' ? {} : { variable: controls.variable }),
-    } as const;
-    if (mode === 'fit' && interval) {
-      answer = await this.#services.client.ask<FitAnswer>({ ask: 'fit', ...common, ...fitOptions(controls, interval), form: settings.form, details: ['plot'] }, signal);
-    } else if (mode === 'guard') {
-      answer = await this.#services.client.ask<GuardAnswer>({ ask: 'guard', ...common, point: controls.point || '0', ...(interval ? { interval } : {}) }, signal);
-    }
-    const proposals = answer?.ok ? await this.#services.client.consult({ desk: 'replacement', text: common.text, language, place, code: answer.code, imports: answer.imports ?? [], argument: argumentsOf(answer, controls) }) : null;
+    const mode = this.#formMode;
+    const { client } = this.#services;
+    const request = await formRequest(this.#services, document, focus.place, mode, controls);
+    const answer = request === null ? null : await client.ask<FitAnswer | GuardAnswer>(request, signal);
+    const proposals = request && answer?.ok ? await client.consult({ desk: 'replacement', text: request.text, language: engineLanguage(document), place: focus.place, code: answer.code, imports: answer.imports ?? [], argument: argumentsOf(answer, controls) }) : null;
     if (turn !== this.#turn || document.version !== version) return;
     this.#stale = null;
     this.#consultation = null;
     this.#ground = version;
-    if (answer && !answer.ok) answer = { ...answer, error: { ...answer.error, message: said(answer.error.message) } };
-    this.#shown = mode === 'fit' ? { kind: 'fit', answer: answer as FitAnswer | ErrorAnswer | null, controls } : { kind: 'guard', answer: answer as GuardAnswer | ErrorAnswer | null, controls };
+    const told = codeSaid(answer);
+    this.#shown = mode === 'fit' ? { kind: 'fit', answer: told as Extract<Shown, { kind: 'fit' }>['answer'], controls } : { kind: 'guard', answer: told as Extract<Shown, { kind: 'guard' }>['answer'], controls };
     this.#proposals = proposals && 'proposals' in proposals ? proposals.proposals : [];
   }
 
@@ -385,21 +317,8 @@ export class Page implements vscode.Disposable {
   }
 
   async #copy(what: CopyKind): Promise<void> {
-    const shown = this.#shown;
-    const text =
-      shown.kind === 'expansion'
-        ? what === 'latex'
-          ? shown.answer.latex
-          : what === 'unicode'
-            ? shown.answer.text
-            : what === 'request'
-              ? requestCommand(this.#focus?.text ?? '', engineLanguageOf(this.#document()), shown.asked)
-              : shown.answer.numeric.sum
-        : shown.kind === 'claims'
-          ? claimsReport(this.#document()?.uri.path.split('/').at(-1) ?? '', shown)
-          : (shown.kind === 'fit' || shown.kind === 'guard') && shown.answer?.ok
-          ? shown.answer.code
-          : null;
+    const document = this.#document();
+    const text = copied(this.#shown, what, { name: nameOf(document), text: this.#focus?.text ?? '', language: document ? engineLanguage(document) : 'plain' });
     if (text === null) return;
     await vscode.env.clipboard.writeText(text);
     vscode.window.setStatusBarMessage(vscode.l10n.t('Copied: {0}', shorten(firstLine(text), 60)), 4000);
@@ -410,10 +329,8 @@ export class Page implements vscode.Disposable {
     if (!entry) return;
     const document = vscode.workspace.textDocuments.find((candidate) => candidate.uri.toString() === entry.focus.uri.toString());
     if (!document) return;
-    // The text may have moved: the same words nearest to the old place are meant.
-    const start = nearest(document.getText(), entry.focus.text, entry.focus.place.start);
-    if (start === null) return;
-    await this.show(document, { start, end: start + entry.focus.text.length }, 'expand', entry.chosen);
+    const place = placeAgain(document.getText(), entry.focus);
+    if (place) await this.show(document, place, 'expand', entry.chosen);
   }
 
   async #reveal(): Promise<void> {
@@ -423,13 +340,6 @@ export class Page implements vscode.Disposable {
     const range = rangeOf(document, this.#focus.place.start, this.#focus.place.end);
     editor.selection = new vscode.Selection(range.start, range.end);
     editor.revealRange(range, vscode.TextEditorRevealType.InCenterIfOutsideViewport);
-  }
-
-  #remember(label: string): void {
-    const focus = this.#focus;
-    if (!focus || focus.text === '') return;
-    const entry: Remembered = { label: shorten(focus.text.replace(/\s+/g, ' '), 80), detail: shorten(label, 120), focus, chosen: this.#chosen };
-    this.#history = [entry, ...this.#history.filter((old) => old.label !== entry.label || old.focus.uri.toString() !== focus.uri.toString())].slice(0, HISTORY_LENGTH);
   }
 
   #document(): vscode.TextDocument | null {
@@ -443,11 +353,11 @@ export class Page implements vscode.Disposable {
     const state: PageState = {
       shown: this.#shown,
       busy: this.#busy > 0,
-      place: document ? `${document.uri.path.split('/').at(-1) ?? ''}${this.#mode === 'claims' ? '' : `:${line}`}` : '',
+      place: document ? `${nameOf(document)}${this.#mode === 'claims' ? '' : `:${line}`}` : '',
       code: document ? isCode(engineLanguage(document)) : false,
       pinned: this.#pinned,
       stale: this.#stale,
-      actions: this.#proposals.map((proposal) => ({ label: this.#mode !== 'expand' && proposal.kind !== 'corrections' && document ? vscode.l10n.t('Replace in {0}', document.uri.path.split('/').at(-1) ?? '') : buttonLabel(proposal), title: proposalTitle(proposal) })),
+      actions: this.#proposals.map((proposal) => ({ label: this.#mode !== 'expand' && proposal.kind !== 'corrections' && document ? vscode.l10n.t('Replace in {0}', nameOf(document)) : buttonLabel(proposal), title: proposalTitle(proposal) })),
       history: this.#history.slice(1).map(({ label, detail }) => ({ label, detail })),
     };
     const message: ToPage = { kind: 'state', state, kept: this.kept };
@@ -455,27 +365,7 @@ export class Page implements vscode.Disposable {
   }
 }
 
-/** What the form says beyond the interval, left out where it says nothing. */
-function fitOptions({ tolerance, measure, variable, second, secondFrom, secondTo, reduction, words, assertion }: CodeControls, interval: readonly [string, string]): Pick<FitRequest, 'interval' | 'intervals' | 'tolerance' | 'measure' | 'reduction' | 'words' | 'assertion'> {
-  return {
-    interval,
-    tolerance,
-    measure,
-    ...(second !== '' && secondFrom !== '' && secondTo !== '' ? { intervals: { [variable]: interval, [second]: [secondFrom, secondTo] } } : {}),
-    ...(reduction === 'auto' ? {} : { reduction }),
-    ...(words === '' ? {} : { words: words === '1' ? 1 : 2 }),
-    ...(assertion ? { assertion } : {}),
-  };
-}
-
-/** What the new function is called with. */
-const argumentsOf = (answer: FitAnswer | GuardAnswer, { variable }: CodeControls): string => ('arguments' in answer && answer.arguments ? answer.arguments.join(', ') : variable);
-
-/** Markdown for a review. */
-function claimsReport(name: string, { summary, rows }: Extract<Shown, { readonly kind: 'claims' }>): string {
-  const cell = (text: string): string => text.replaceAll('|', '\\|').replaceAll('`', "'");
-  return [`## ${name}`, summary, ['| line | verdict | claim | reason |', '| --- | --- | --- | --- |', ...rows.map((row) => `| ${row.line} | ${row.verdict} | \`${cell(row.claim)}\` | ${cell(row.reason)} |`)].join('\n')].join('\n\n');
-}
+const nameOf = (document: vscode.TextDocument | null): string => document?.uri.path.split('/').at(-1) ?? '';
 
 /** The page shows the result itself, so its buttons need only say what is done with it. */
 function buttonLabel({ kind }: Proposal): string {
@@ -492,14 +382,7 @@ function buttonLabel({ kind }: Proposal): string {
 }
 
 const firstLine = (text: string): string => text.split('\n').find((line) => line.trim() !== '')?.trim() ?? '';
-const engineLanguageOf = (document: vscode.TextDocument | null): string => (document ? engineLanguage(document) : 'plain');
 const columnOf = (document: vscode.TextDocument): { viewColumn?: vscode.ViewColumn } => {
   const column = vscode.window.visibleTextEditors.find((editor) => editor.document === document)?.viewColumn;
   return column === undefined ? {} : { viewColumn: column };
 };
-
-export function nearest(text: string, wanted: string, around: number): number | null {
-  let best: number | null = null;
-  for (let at = text.indexOf(wanted); at >= 0; at = text.indexOf(wanted, at + 1)) if (best === null || Math.abs(at - around) < Math.abs(best - around)) best = at;
-  return best;
-}

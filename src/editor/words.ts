@@ -15,6 +15,12 @@ export function said(message: string): string {
   return filled(bundle[known.sentence] ?? known.sentence, known.values.map((value) => (value.length < message.length ? said(value) : value)));
 }
 
+/** Several sentences in a row, each by itself where they are not known as a whole. */
+export function saidEach(text: string): string {
+  const whole = said(text);
+  return whole !== text ? whole : text.split(/(?<=\.)\s+(?=\S)/).map(said).join(' ');
+}
+
 export function sourceName(source: Source | undefined): string {
   switch (source) {
     case 'chosen':

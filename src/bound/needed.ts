@@ -359,9 +359,10 @@ function atRadius(problem: NeededProblem, expansionOf: (n: number) => Expansion,
 export function reachWith(problem: Omit<NeededProblem, 'expansionWithTerms' | 'interval'>, expansion: Expansion, tolerance: Rational, sides?: ClosedInterval): { readonly distance: string; readonly size: Rational } | null {
   if (expansion.exact && !expansion.left) return isOnePiece(expansion.function, variableName(expansion)) ? { distance: 'inf', size: Q.rational(10n ** 30n) } : null;
   const intervalOf = (distance: Rational): ClosedInterval => within(expansion, build.number(distance), sides);
+  const errorAt = (distance: Rational): Rational | null => endErrors({ ...problem, interval: intervalOf(distance) }, tolerance)(expansion);
   /** A value at an end refutes at little cost. */
   const refuted = (distance: Rational): boolean => {
-    const error = endErrors({ ...problem, interval: intervalOf(distance) }, tolerance)(expansion);
+    const error = errorAt(distance);
     return error !== null && Q.compare(error, tolerance) > 0;
   };
   const keeps = (distance: Rational): boolean => {
@@ -375,6 +376,9 @@ export function reachWith(problem: Omit<NeededProblem, 'expansionWithTerms' | 'i
       throw error;
     }
   };
+  // The values at the ends, which are the worst places as a rule, say where to prove.
+  const likely = crossing(errorAt, tolerance, () => problem.budget.check());
+  if (likely !== null && keeps(likely)) return { distance: real.rationalToDecimal(likely, 7, -1), size: likely };
   // A power of two that keeps it while its double does not.
   const two = Q.rational(2n);
   let low: Rational = Q.ONE;
@@ -400,6 +404,56 @@ export function reachWith(problem: Omit<NeededProblem, 'expansionWithTerms' | 'i
     }
     // The printed number itself must keep it: rounding down may only shrink the interval.
     if (holds === keeps || keeps(from)) return { distance: real.rationalToDecimal(from, 7, -1), size: from };
+  }
+  return null;
+}
+
+/** Doublings from 1 in each direction that are looked through for a change of sides. */
+const MOST_DOUBLINGS = 40;
+/** Relative width of the bracket that is enough for 7 digits. */
+const NARROW = 2 ** -25;
+
+/** A distance at which the error is still within the tolerance while a very little farther it is not; null where the values do not show one. Errors grow like powers of the distance: found by the secant of their logarithms. */
+function crossing(errorAt: (distance: Rational) => Rational | null, tolerance: Rational, check: () => void): Rational | null {
+  /** Logarithm of the error over the tolerance: positive where it is refuted; null where there is no value. */
+  const excess = (distance: Rational): number | null => {
+    check();
+    const error = errorAt(distance);
+    if (error === null) return null;
+    const compared = Q.compare(error, tolerance);
+    const size = logarithm(Q.divide(error, tolerance));
+    return compared > 0 ? Math.max(size, Number.MIN_VALUE) : Math.min(size, 0);
+  };
+  const powerOfTwo = (k: number): Rational => (k >= 0 ? Q.rational(1n << BigInt(k)) : Q.rational(1n, 1n << BigInt(-k)));
+  let k = 0;
+  let here = excess(powerOfTwo(0));
+  if (here === null) return null;
+  const step = here > 0 ? -1 : 1;
+  let [from, to, below, above] = [Q.ONE, Q.ONE, here, here];
+  for (;;) {
+    k += step;
+    const next = excess(powerOfTwo(k));
+    if (next === null || Math.abs(k) > MOST_DOUBLINGS) return null;
+    if (next > 0 !== here > 0) {
+      [from, below, to, above] = step > 0 ? [powerOfTwo(k - 1), here, powerOfTwo(k), next] : [powerOfTwo(k), next, powerOfTwo(k + 1), here];
+      break;
+    }
+    here = next;
+  }
+  let up = true;
+  for (let tries = 0; tries < 40; tries += 1) {
+    const [a, b] = [Q.toDouble(from), Q.toDouble(to)];
+    const width = b / a - 1;
+    if (width <= NARROW) return from;
+    const secant = a * Math.exp((Math.log(b / a) * below) / (below - above));
+    // A little beyond the secant's zero, on the side that has not moved, so that both ends come near; where it leads nowhere, halfway.
+    const guess = tries % 8 < 6 && Number.isFinite(below) ? secant * (up ? 1 + NARROW / 4 : 1 - NARROW / 4) : Math.sqrt(a * b);
+    const inside = Math.min(Math.max(guess, a * (1 + NARROW / 8)), b * (1 - NARROW / 8));
+    const middle = Q.fromDouble(inside);
+    const value = excess(middle);
+    if (value === null) return null;
+    if (value > 0) [to, above, up] = [middle, value, false];
+    else [from, below, up] = [middle, value, true];
   }
   return null;
 }

@@ -1,7 +1,7 @@
 /** Bound, terms needed, ladder, reach and value at an argument, added to an expansion's answer. */
 import type { Assumption, Rational } from '../expression/index.ts';
 import { boundRemainder, type ClosedInterval, ladder, leastTerm, type NeededProblem, reachFor, type RemainderBound, termsNeeded, type TermsNeeded, valueAt } from '../bound/index.ts';
-import type { Expansion } from '../expand/index.ts';
+import { type Expansion, prefix } from '../expand/index.ts';
 import { Q } from '../expression/index.ts';
 import { type Budget, failure, type Outcome, success } from '../outcome.ts';
 import type { BoundAnswer, ExpandAnswer, ExpandRequest, LadderRow, NeededAnswer, ReachRow } from '../protocol.ts';
@@ -110,7 +110,8 @@ const orderText = (expansion: Expansion): string => (expansion.remainder?.power 
 function reachRows(expander: Expander, shared: { readonly measure: 'absolute' | 'relative'; readonly assumptions: readonly Assumption[]; readonly budget: Budget }, tolerance: Rational): readonly ReachRow[] {
   const rows: ReachRow[] = [];
   for (const terms of REACH_TERMS) {
-    const expansion = expander.withTerms(terms);
+    // What was expanded already need only be cut.
+    const expansion = terms < expander.first.terms.length ? success(prefix(expander.first, terms)) : terms === expander.first.terms.length ? success(expander.first) : expander.withTerms(terms);
     if (!expansion.ok) break;
     if (expansion.value.exact) {
       rows.push({ terms: expansion.value.terms.length, order: 'exact', distance: 'inf' });

@@ -44,7 +44,7 @@ function expanderOf(request: ExpandRequest, source: SourceFormula, time: Budget)
   const withStated = (outcome: Outcome<Expansion>): Outcome<Expansion> =>
     outcome.ok && stated.length > 0 ? success({ ...outcome.value, assumptions: [...outcome.value.assumptions, ...stated.filter((s) => !outcome.value.assumptions.includes(s))] }) : outcome;
   // A hover asks for details but has no room for the radius; every other answer states it, and where no number of terms serves it is the reach.
-  const radius = request.details === undefined || request.details.includes('ladder') || request.tolerance !== undefined;
+  const radius = request.details === undefined || request.details.includes('ladder') || (request.tolerance !== undefined && request.interval !== undefined);
   return run((n) => withStated(expand({ ...problem, radius, ...n } satisfies ExpansionProblem, time)));
 }
 

@@ -20,7 +20,7 @@ const DEFAULT_LANGUAGE = 'c';
 const END_BITS = 192;
 const DIGITS = 6;
 /** Most of the time that the count of terms of a truncated expansion may take: it is a comparison beside the answer. Several times what the slowest series that converge need. */
-const COMPARISON_MS = 6000;
+const COMPARISON_MS = 2000;
 /** Share of the request's time that it may take; the answer itself is there already. */
 const COMPARISON_SHARE = 0.8;
 

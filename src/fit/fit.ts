@@ -1,6 +1,6 @@
 /** A fit as asked for: the polynomial, the program in the target language, what was proved, what was assumed. */
 import { build, type Expression, Q, type Rational } from '../expression/index.ts';
-import { attempt, type Budget, Declined, type Outcome } from '../outcome.ts';
+import { attempt, budget as newBudget, type Budget, Declined, type Outcome } from '../outcome.ts';
 import { real } from '../rigorous/index.ts';
 import { codeLanguage, type PolynomialTerm, type Statement, toPlain } from '../write/index.ts';
 import { codeFormat, type FitCodeText, fitCode, functionName, fusing, machineArithmetic, type ParameterRange, rowFor, wholeFunction } from './code.ts';
@@ -117,26 +117,30 @@ function fitted(problem: FitProblem, budget: Budget): Fit {
   if (reduction === 'none' || problem.pieces !== 1 || problem.result === 'expression') return plain(problem, whole, written, budget);
   const asked: ReductionProblem = { whole, row, parameter: LOCALS.includes(parameterName(problem)) ? 'x' : parameterName(problem) };
   const shape = reducible(asked);
-  const viaReduction = (): Fit => {
+  const viaReduction = (time: Budget): Fit => {
     if (!shape) throw notReducible();
-    return reducedFit(problem, [asked.parameter], whole, reduce(asked, shape, budget), written);
+    return reducedFit(problem, [asked.parameter], whole, reduce(asked, shape, time), written);
   };
-  if (reduction === 'always') return viaReduction();
-  const viaPolynomial = (): Fit => plain(problem, whole, written, budget);
-  if (!shape || !problem.tolerance || problem.basis || problem.exact) return viaPolynomial();
-  return needsHighDegree(asked, budget) ? firstOf(viaReduction, viaPolynomial) : firstOf(viaPolynomial, viaReduction);
+  if (reduction === 'always') return viaReduction(budget);
+  const viaPolynomial = (time: Budget): Fit => plain(problem, whole, written, time);
+  if (!shape || !problem.tolerance || problem.basis || problem.exact) return viaPolynomial(budget);
+  return needsHighDegree(asked, budget) ? firstOf(viaReduction, viaPolynomial, budget) : firstOf(viaPolynomial, viaReduction, budget);
 }
 
+type Way = (time: Budget) => Fit;
+/** Share of the time left that the second way may take: it is mostly declined as well. */
+const SECOND_SHARE = 0.3;
+
 /** The first way that is not declined; the reason of the first where neither is open. */
-function firstOf(way: () => Fit, other: () => Fit): Fit {
+function firstOf(way: Way, other: Way, time: Budget): Fit {
   try {
-    return way();
+    return way(time);
   } catch (declined) {
     if (!(declined instanceof Declined) || declined.failure.code === 'over-budget' || declined.failure.code === 'needs-assumption') throw declined;
     try {
-      return other();
+      return other(newBudget(SECOND_SHARE * time.remaining(), () => -time.remaining(), () => (time.check(), false)));
     } catch (second) {
-      if (second instanceof Declined && second.failure.code !== 'over-budget') throw declined;
+      if (second instanceof Declined) throw declined;
       throw second;
     }
   }

@@ -8,7 +8,7 @@ import { fromFixed } from './fixed.ts';
 import { binaryExponent, type FloatFormat, isRepresentable, powerOfTwo, roundTo } from './format.ts';
 import { shiftedResidual } from './grid.ts';
 import { type Arithmetic, canStandApart, polynomialProgram, type Program, twoWordProgram } from './program.ts';
-import { certifiedTerms, type CertifiedPolynomial, errorParts, type EvaluationProof, type FitMeasure, type InheritedError, type ProofProblem, type ProvedError, proveProgram } from './proof.ts';
+import { certifiedBeside, certifiedTerms, type CertifiedPolynomial, errorParts, type EvaluationProof, type FitMeasure, type InheritedError, type ProofProblem, type ProvedError, proveProgram } from './proof.ts';
 import { type Basis, basisFor, bestOfDegree, type Found, leastDegree, leastWithin, nextDegree, type Search } from './search.ts';
 import { type FitTarget, prepareKept, prepareTarget } from './target.ts';
 import { economizedOfDegree, taylorOfDegree, taylorWithin } from './truncated.ts';
@@ -263,6 +263,6 @@ function finished({ search, proof }: Setting, { found, terms, polynomial, progra
     found.problem,
     target.order,
   )];
-  const ideal = certifiedTerms(unrounded, proof, budget);
+  const ideal = certifiedBeside(unrounded, { terms, polynomial }, proof, budget);
   return { target, terms, unrounded, degree: found.degree, basis, centre: target.zero, program, writtenProgram, error: errorParts(total, polynomial, ideal, proof, budget), certified: polynomial.whole.upper };
 }

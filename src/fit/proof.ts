@@ -92,6 +92,30 @@ export interface CertifiedPolynomial {
 export const certified = (approximation: Expression, problem: ProofProblem, budget: Budget): CertifiedPolynomial => ({ approximation, whole: certify(approximation, problem, budget), parts: new Map() });
 export const certifiedTerms = (terms: readonly PolynomialTerm[], problem: ProofProblem, budget: Budget): CertifiedPolynomial => certified(polynomialOf(terms, problem.variable, problem.centre), problem, budget);
 
+/** A change of the coefficients that moves a certified bound by less than this part of it needs no certificate of its own. */
+const NEGLIGIBLE = powerOfTwo(-16);
+
+/**
+ * The same for a polynomial close to one that is certified: sup |p - q| by the sizes of the coefficients' changes where that is negligible, else a certificate of its own.
+ * Only the absolute measure has such a shortcut: relative to f the change can be large beside a zero.
+ */
+export function certifiedBeside(terms: readonly PolynomialTerm[], neighbour: { readonly terms: readonly PolynomialTerm[]; readonly polynomial: CertifiedPolynomial }, problem: ProofProblem, budget: Budget): CertifiedPolynomial {
+  const { whole } = neighbour.polynomial;
+  const moved = problem.measure === 'absolute' ? largestChange(terms, neighbour.terms, problem) : null;
+  if (!moved || Q.compare(moved, Q.multiply(whole.upper, NEGLIGIBLE)) > 0) return certifiedTerms(terms, problem, budget);
+  const shifted = { ...whole, upper: Q.add(whole.upper, moved), lower: nonNegative(Q.subtract(whole.lower, moved)) };
+  return { approximation: polynomialOf(terms, problem.variable, problem.centre), whole: shifted, parts: new Map() };
+}
+
+/** sup |p - q| on the interval, at most. */
+function largestChange(p: readonly PolynomialTerm[], q: readonly PolynomialTerm[], { low, high, centre }: ProofProblem): Rational {
+  const reach = greater(Q.absolute(Q.subtract(low, centre)), Q.absolute(Q.subtract(high, centre)));
+  const changes = new Map<number, Rational>();
+  for (const { power, value } of p) changes.set(power, Q.add(changes.get(power) ?? Q.ZERO, value));
+  for (const { power, value } of q) changes.set(power, Q.subtract(changes.get(power) ?? Q.ZERO, value));
+  return [...changes].reduce((sum, [power, change]) => Q.add(sum, Q.multiply(Q.absolute(change), Q.power(reach, power))), Q.ZERO);
+}
+
 /** The certified bound of |f - p| with the inherited error: r |f(y)| + |f(y) - f(x)| <= (r + e + r e) |f(x)|. */
 function withInherited(upper: Rational, { measure, inherited }: ProofProblem): Rational {
   if (!inherited) return upper;

@@ -7,10 +7,12 @@ import { reduceArc } from './arc.ts';
 import { reduceArctangent } from './arctangent.ts';
 import { reduceCircular } from './circular.ts';
 import { reduceExponential } from './exponential.ts';
+import { reduceHyperbolic } from './hyperbolic.ts';
 import type { Reduced, ReductionProblem } from './kernel.ts';
 import { reduceLogarithm } from './logarithm.ts';
 import { reducePower } from './power.ts';
 import { recognise, type Shape } from './recognise.ts';
+import { reduceTangent } from './tangent.ts';
 
 export { PAIR_LOCALS, recognisePair, reducePair } from './pair.ts';
 export { LOCALS, type Kernel, type Reduced, type ReductionProblem } from './kernel.ts';
@@ -24,7 +26,7 @@ export const reducible = ({ whole }: ReductionProblem): Shape | null =>
   whole.method === 'minimax' && (whole.format.name === 'binary32' || whole.format.name === 'binary64') ? recognise(whole.function, whole.variable) : null;
 
 export const notReducible = (): Declined =>
-  new Declined('bad-request', 'Arguments are reduced for exp, log, sin, cos, asin, acos, atan and constant powers of one variable, in binary32 and binary64, by the method minimax; leave the reduction out.');
+  new Declined('bad-request', 'Arguments are reduced for exp, log, log(1 + x), sin, cos, tan, sinh, cosh, tanh, asin, acos, atan and constant powers of one variable, in binary32 and binary64, by the method minimax; leave the reduction out.');
 
 /** Whether a plain polynomial would need a degree above 12. By the Chebyshev coefficients of f in doubles: an estimate that only chooses the way. */
 export function needsHighDegree({ whole }: ReductionProblem, budget: Budget): boolean {
@@ -55,8 +57,12 @@ export function reduce(problem: ReductionProblem, shape: Shape, budget: Budget):
       return reduceExponential(problem, shape.rate, budget);
     case 'circular':
       return reduceCircular(problem, shape.rate, shape.quarter, budget);
+    case 'tangent':
+      return reduceTangent(problem, shape.factor, shape.rate, budget);
+    case 'hyperbolic':
+      return reduceHyperbolic(problem, shape, budget);
     case 'logarithm':
-      return reduceLogarithm(problem, shape.factor, budget);
+      return reduceLogarithm(problem, shape.factor, shape.plusOne, budget);
     case 'arc':
       return reduceArc(problem, shape.of, shape.factor, budget);
     case 'arctangent':

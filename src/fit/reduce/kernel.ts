@@ -56,8 +56,18 @@ export function fitKernel({ whole }: ReductionProblem, kernel: KernelProblem, bu
   const { tolerance, degree, basis: _, ...rest } = whole;
   const goal = kernel.tolerance ? { tolerance: kernel.tolerance } : degree === undefined ? {} : { degree };
   if (kernel.tolerance && Q.signOf(kernel.tolerance) <= 0) throw tooSmall(whole, tolerance ?? Q.ZERO);
-  const found = fitPolynomial({ ...rest, ...goal, variable: REDUCED, function: kernel.function, low: kernel.low, high: kernel.high, measure: kernel.measure, ...(kernel.inherited ? { inherited: kernel.inherited } : {}) }, budget);
-  return { function: kernel.function, found, low: kernel.low, high: kernel.high };
+  const asked: PolynomialProblem = { ...rest, ...goal, variable: REDUCED, function: kernel.function, low: kernel.low, high: kernel.high, measure: kernel.measure, ...(kernel.inherited ? { inherited: kernel.inherited } : {}) };
+  return { function: kernel.function, found: kernel.tolerance ? kept(asked, whole, tolerance ?? Q.ZERO, budget) : fitPolynomial(asked, budget), low: kernel.low, high: kernel.high };
+}
+
+/** A polynomial that cannot keep its share of the tolerance is declined in terms of the whole. */
+function kept(asked: PolynomialProblem, whole: PolynomialProblem, tolerance: Rational, budget: Budget): PolynomialFit {
+  try {
+    return fitPolynomial(asked, budget);
+  } catch (error) {
+    if (error instanceof Declined && error.failure.code === 'bad-request') throw tooSmall(whole, tolerance);
+    throw error;
+  }
 }
 
 export const tooSmall = ({ format }: PolynomialProblem, tolerance: Rational): Declined =>
@@ -116,11 +126,27 @@ export function lastRounded(off: Rational, least: Rational, most: Rational, meas
   return Q.add(units, greater(Q.HALF, lesser(Q.ONE, units)));
 }
 
+/** The error of fl(v) in a measure where v is off by the part `off` of f, |f| <= most: half an ulp more, or in ulp no more than v is off and than one ulp where a float lies between (as above). */
+export function scaledError(off: Rational, most: Rational, measure: FitMeasure, { operations, result }: Arithmetic): Rational {
+  const before = operations.name === result.name ? off : Q.add(off, Q.multiply(powerOfTwo(-operations.precision), Q.add(Q.ONE, off)));
+  if (measure === 'absolute') return Q.add(Q.multiply(before, most), halfUlp(Q.multiply(most, Q.add(Q.ONE, before)), result));
+  if (measure === 'relative') return Q.add(before, Q.multiply(powerOfTwo(-result.precision), Q.add(Q.ONE, before)));
+  // One ulp of f is more than 2^-p |f|.
+  const units = Q.multiply(before, powerOfTwo(result.precision));
+  return Q.add(units, greater(Q.HALF, lesser(Q.ONE, units)));
+}
+
+/** Beyond the smallest tolerance that a binary64 result can keep. */
+const MOST_HALVINGS = 128;
+
 /** The largest error `off` that keeps a growing total within the tolerance; zero where none does. */
 export function allowedOff(total: (off: Rational) => Rational, tolerance: Rational, from: Rational): Rational {
   let [good, bad] = [Q.ZERO, from];
   if (Q.compare(total(good), tolerance) > 0) return Q.ZERO;
-  for (let k = 0; k < 24; k += 1) {
+  for (let k = 0; k < MOST_HALVINGS && Q.compare(total(bad), tolerance) > 0; k += 1) bad = Q.divide(bad, Q.rational(2));
+  if (Q.compare(total(bad), tolerance) > 0) return Q.ZERO;
+  if (Q.compare(bad, from) < 0) [good, bad] = [bad, Q.multiply(bad, Q.rational(2))];
+  for (let k = 0; k < 20; k += 1) {
     const middle = Q.divide(Q.add(good, bad), Q.rational(2));
     if (Q.compare(total(middle), tolerance) <= 0) good = middle;
     else bad = middle;

@@ -39,7 +39,7 @@ export function roundedUp(q: Rational, bits = 30): Rational {
 export const halfUlp = (size: Rational, { precision, emin }: FloatFormat): Rational => (Q.isZero(size) ? Q.ZERO : powerOfTwo(Math.max(binaryExponent(size), emin) - precision));
 
 /** The nearest float with at most `bits` significant bits. */
-function shortened(q: Rational, bits: number): Rational {
+export function shortened(q: Rational, bits: number): Rational {
   if (Q.isZero(q)) return q;
   const unit = powerOfTwo(binaryExponent(q) - bits + 1);
   return Q.multiply(Q.rational(Q.floor(Q.add(Q.divide(q, unit), Q.HALF))), unit);
@@ -59,9 +59,10 @@ const MOST_MARGIN = Q.rational(1, 16);
 
 /**
  * `allowed` is the error of x - k T that still does no harm; more parts are taken until it is reached or rounding alone is larger.
+ * `closest` is the |x - k T| at which that is judged (default: all of them): where f is steep or zero beside a multiple of T, that near to it.
  * Throws Declined beyond the |x| up to which the products stay exact and k the nearest integer but for a sixteenth.
  */
-export function splitPeriod(period: Ball, low: Rational, high: Rational, { operations, result }: Arithmetic, allowed: Rational, what: string): Period {
+export function splitPeriod(period: Ball, low: Rational, high: Rational, { operations, result }: Arithmetic, allowed: Rational, what: string, closest?: Rational): Period {
   const [lower, upper] = [real.lower(period), real.upper(period)];
   const size = greater(magnitude(lower), magnitude(upper));
   const middle = Q.divide(Q.add(lower, upper), Q.rational(2));
@@ -88,12 +89,14 @@ export function splitPeriod(period: Ball, low: Rational, high: Rational, { opera
   const half = Q.add(Q.HALF, margin);
   const parts: Rational[] = [];
   const exactPeriod: ExactPeriod = { value: middle, spread: Q.subtract(upper, lower), smallest: Q.multiply(Q.subtract(Q.ONE, half), size), arithmetic: { operations, result } };
-  let best: { readonly parts: readonly Rational[]; readonly error: Rational; readonly reach: Rational } | null = null;
+  let best: Loss | null = null;
+  const everywhere = Q.multiply(half, size);
+  const judgedAt = closest && Q.compare(closest, everywhere) < 0 ? closest : everywhere;
   let rest = middle;
   for (let n = 1; n <= MOST_PARTS; n += 1) {
     const last = roundTo(rest, result);
     if (!last || (!Q.isZero(rest) && binaryExponent(rest) < result.emin)) break;
-    const tried = lossOf([...parts, last], exactPeriod, Q.multiply(half, size), count);
+    const tried = lossOf([...parts, last], exactPeriod, judgedAt, count);
     if (!best || Q.compare(Q.multiply(tried.error, Q.rational(17, 16)), best.error) < 0) best = tried;
     if (Q.compare(tried.error, allowed) <= 0) break;
     const part = shortened(rest, bits);
@@ -103,7 +106,8 @@ export function splitPeriod(period: Ball, low: Rational, high: Rational, { opera
   }
   if (!best) throw new Declined('bad-request', `The period ${what} is out of range in ${result.name}; ask for another format.`);
   const taken = best.parts;
-  return { parts: taken, inverse, reach: roundedUp(best.reach), error: roundedUp(best.error), errorAt: (k, closest) => roundedUp(lossOf(taken, exactPeriod, closest, k).error), least, most };
+  const { reach, error } = lossOf(taken, exactPeriod, everywhere, count);
+  return { parts: taken, inverse, reach: roundedUp(reach), error: roundedUp(error), errorAt: (k, near) => roundedUp(lossOf(taken, exactPeriod, near, k).error), least, most };
 }
 
 const beyond = (limit: Rational, what: string, { name }: FloatFormat): Declined =>
@@ -117,8 +121,14 @@ interface ExactPeriod {
   readonly arithmetic: Arithmetic;
 }
 
+interface Loss {
+  readonly parts: readonly Rational[];
+  readonly error: Rational;
+  readonly reach: Rational;
+}
+
 /** The differences v_i = x - k (c_1 + ... + c_i), |k| <= count, computed one after the other, with or without fusing; `exactReach` bounds |x - k T|. */
-function lossOf(parts: readonly Rational[], { value: period, spread, smallest, arithmetic: { operations, result } }: ExactPeriod, exactReach: Rational, count: number): { readonly parts: readonly Rational[]; readonly error: Rational; readonly reach: Rational } {
+function lossOf(parts: readonly Rational[], { value: period, spread, smallest, arithmetic: { operations, result } }: ExactPeriod, exactReach: Rational, count: number): Loss {
   const k = Q.rational(count);
   const bitsOfCount = count.toString(2).length;
   // Where k is not zero, x is a float of the result's format beyond T/2 - margin: a multiple of its last place there.

@@ -2,12 +2,15 @@
 import { build, dependsOn, type Expression, Q, type Rational, rationalOf } from '../../expression/index.ts';
 import { describe } from '../../functions/index.ts';
 import { type Ball, encloseReal, real } from '../../rigorous/index.ts';
+import type { Hyperbolic } from './hyperbolic.ts';
 
 /** f = A g(c x + d), all constants; `exponential`: A e^(c x + d). */
 export type Shape =
   | { readonly kind: 'exponential'; readonly rate: Expression }
   | { readonly kind: 'circular'; readonly rate: Expression; /** f a quarter period on: f(x + pi / (2 c)). */ readonly quarter: Expression }
-  | { readonly kind: 'logarithm'; /** f = A log(c x), natural logarithm. */ readonly factor: Expression }
+  | { readonly kind: 'logarithm'; /** f = A log(c x), or A log(1 + x) where `plusOne`; natural logarithm. */ readonly factor: Expression; readonly plusOne: boolean }
+  | ({ readonly kind: 'hyperbolic' } & Hyperbolic)
+  | { readonly kind: 'tangent'; /** f = A tan(c x), c > 0. */ readonly factor: Expression; readonly rate: Expression }
   | { readonly kind: 'arctangent'; readonly factor: Expression }
   | { readonly kind: 'arc'; readonly of: 'asin' | 'acos'; readonly factor: Expression }
   | { readonly kind: 'power'; readonly exponent: Rational };
@@ -77,8 +80,11 @@ function core(e: Expression, x: string, factor: Expression, around: Rebuild): Sh
     case 'log2':
     case 'log10': {
       const base = { log: 0, log2: 2, log10: 10 }[e.function];
-      return scaled(argument, x) ? { kind: 'logarithm', factor: base === 0 ? factor : build.quotient(factor, build.call('log', build.number(base))) } : null;
+      const plusOne = isOnePlus(argument, x);
+      return plusOne || scaled(argument, x) ? { kind: 'logarithm', plusOne, factor: base === 0 ? factor : build.quotient(factor, build.call('log', build.number(base))) } : null;
     }
+    case 'log1p':
+      return build.isSymbol(argument, x) ? { kind: 'logarithm', plusOne: true, factor } : null;
     case 'sqrt':
       return scaled(argument, x) ? { kind: 'power', exponent: Q.HALF } : null;
     case 'sin':
@@ -86,6 +92,15 @@ function core(e: Expression, x: string, factor: Expression, around: Rebuild): Sh
       const rate = slopeOf(argument, x);
       const next = e.function === 'sin' ? build.call('cos', argument) : build.negation(build.call('sin', argument));
       return rate && { kind: 'circular', rate, quarter: around(next) };
+    }
+    case 'sinh':
+    case 'cosh':
+    case 'tanh':
+    case 'tan': {
+      const found = proportional(argument, x);
+      if (!found) return null;
+      const signed = found.negative && e.function !== 'cosh' ? build.negation(factor) : factor;
+      return e.function === 'tan' ? { kind: 'tangent', factor: signed, rate: found.rate } : { kind: 'hyperbolic', of: e.function, factor: signed, rate: found.rate };
     }
     case 'asin':
     case 'acos':
@@ -95,6 +110,10 @@ function core(e: Expression, x: string, factor: Expression, around: Rebuild): Sh
     default:
       return null;
   }
+}
+
+function isOnePlus(e: Expression, x: string): boolean {
+  return e.kind === 'sum' && e.terms.length === 2 && e.terms.some((t) => build.isSymbol(t, x)) && e.terms.some((t) => build.isOneNumber(t));
 }
 
 /** c of an argument c x + d with constants c, d; null for any other. */
@@ -124,6 +143,13 @@ function slopeOf(e: Expression, x: string): Expression | null {
     default:
       return null;
   }
+}
+
+/** |c| and the sign of an argument c x; null for any other. */
+function proportional(e: Expression, x: string): { readonly rate: Expression; readonly negative: boolean } | null {
+  const slope = hasSum(e, x) ? null : slopeOf(e, x);
+  const sign = slope && real.sign(constantBall(slope) ?? real.ZERO);
+  return slope && (sign === 1 || sign === -1) ? { rate: sign === 1 ? slope : build.negation(slope), negative: sign === -1 } : null;
 }
 
 /** c of an argument c x, c > 0; null for any other. */

@@ -103,7 +103,6 @@ function vanishesAtInfinity(e: Expression, variable: string, sign: 1 | -1): bool
 
 /** f about the local end of a segment, on its local domain. */
 export function localModel<T>(segment: Segment, n: Numbers<T>, variable: string, length: number, q: number, check: () => void): Local<T> | null {
-  const { r } = n;
   const domain = localDomain(segment, n, length, q);
   if (domain === null) return null;
   const infinite = domain.leaf.valuation < 0;

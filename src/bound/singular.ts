@@ -18,10 +18,11 @@ export function provenPlace<T>(x: T, task: PieceTask<T>, width: number, n: Numbe
     // Inside the task, its ends included.
     if (r.isNegative(r.subtract(p, task.x0)) || r.isPositive(r.subtract(p, task.x1))) continue;
     for (const direction of [1, -1]) {
-      for (const h of [2 ** -6, 2 ** -12]) {
+      for (const [h, q] of [[2 ** -6, 1], [2 ** -12, 1], [2 ** -6, 2], [2 ** -6, 3]] as const) {
+        // x = p +- h s^q: roots of the distance have power series in s.
         const m = modelArithmetic(r, n.unitRight, 10, true, r);
         const step = r.fromRational(Q.fromDouble(direction * h));
-        const leaf = m.polynomial([p, step]);
+        const leaf = m.polynomial([p, ...Array.from({ length: q - 1 }, () => r.zero), step]);
         const vanishes = (e: Expression): boolean => isExactlyZero(substitute(e, variable, place), []);
         const f = logModelOf(task.expansion.function, n, m, variable, leaf, vanishes);
         const s = f && modelOf(task.sum, n, m, variable, leaf, vanishes);

@@ -80,7 +80,7 @@ export const WORDS = {
   copyLatex: 'LaTeX',
   copyCode: 'Code',
   copyUnicode: 'Text',
-  copyRequest: 'Command',
+  copyRequest: 'Command line',
   history: 'Recently expanded',
   busy: 'Computing…',
   stop: 'Stop',

@@ -94,6 +94,20 @@ SCENES.polynomial = async (page) => {
   return { x: 0, y: 0, width: 1120, height: 1120 };
 };
 
+SCENES.guard = async (page) => {
+  await page.setViewportSize({ width: 1120, height: 1120 });
+  await focusEditor(page);
+  await openFromExplorer(page, 'controller.c');
+  await select(page, readFileSync(path.join(DEMO, 'controller.c'), 'utf8'), '(cosh(u) - 1.0) / (u * u)');
+  await runCommand(page, 'Leading Order: Guard This Expression');
+  const frame = await expansionFrame(page, '#compute');
+  await frame.locator('#compute').click();
+  await frame.locator('table.figures').first().waitFor({ timeout: PATIENCE });
+  await frame.locator('#apply-0').waitFor({ timeout: PATIENCE });
+  await pause(500);
+  return { x: 0, y: 0, width: 1120, height: 1120 };
+};
+
 async function around(page, selector, room) {
   const box = await page.locator(selector).first().boundingBox();
   if (!box) throw new Error(`${selector} is not shown`);
@@ -122,7 +136,7 @@ for (const [theme, name] of Object.entries(THEMES)) {
   const { page, close } = await openWorkbench(browser, server.url, { width: 1120, height: 760, scale: 1.5 });
   await openFromExplorer(page, 'sag-note.tex');
   await page.keyboard.press('Control+b');
-  for (const [scene, stage] of [['hover', SCENES.hover], ['fixes', SCENES.fixes], ['problems', SCENES.problems], ['page', SCENES.page], ['claims', SCENES.claims], ['polynomial', SCENES.polynomial]]) {
+  for (const [scene, stage] of [['hover', SCENES.hover], ['fixes', SCENES.fixes], ['problems', SCENES.problems], ['page', SCENES.page], ['claims', SCENES.claims], ['polynomial', SCENES.polynomial], ['guard', SCENES.guard]]) {
     if (wantedScenes.length > 0 && !wantedScenes.includes(scene)) continue;
     try {
       const clip = await stage(page);

@@ -9,7 +9,8 @@ import { type Cubic, depressedCubic, type PolynomialZero, zerosOfCubic } from '.
 import { monomialOf, UNIT } from './monomial.ts';
 import type { Polynomial, Term } from './polynomial.ts';
 import { rationalPower } from './powers.ts';
-import { addElements, isQuotient, multiplyElements, scaleElement } from './quotient.ts';
+import { addElements, multiplyElements, scaleElement } from './quotient.ts';
+import { isQuotient } from './quotientParts.ts';
 import { rationalFactors, type IntegerPolynomial } from './rationalFactors.ts';
 import type { Element } from './types.ts';
 import { cosineOfPi } from './unitCircle.ts';

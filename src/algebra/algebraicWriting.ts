@@ -4,7 +4,10 @@ import type { Context } from './context.ts';
 import type { Kernel } from './kernel.ts';
 import { exponentIn, monomialOf, multiplyMonomials, UNIT, withoutKernel } from './monomial.ts';
 import type { Polynomial } from './polynomial.ts';
-import { addElements, elementFromMonomial, isQuotient, kernelsOf, multiplyElements, normalise, type Quotient } from './quotient.ts';
+import { addElements, elementFromMonomial, multiplyElements } from './quotient.ts';
+import { isQuotient, type Quotient } from './quotientParts.ts';
+import { normalise } from './normalForm.ts';
+import { kernelsOf } from './kernelsOf.ts';
 import type { Element } from './types.ts';
 
 /** The number itself in place of a_n times it, with a kernel free of relations: for writing only. Null where there is no such number. */

@@ -3,7 +3,7 @@ import { Q, type Rational } from '../expression/index.ts';
 import { isWhole, type Exponent } from './exponent.ts';
 import type { Kernel, KernelTable } from './kernel.ts';
 import { polynomialKey } from './polynomial.ts';
-import { isQuotient } from './quotient.ts';
+import { isQuotient } from './quotientParts.ts';
 import { ANY, NEGATIVE, NIL, POSITIVE, REAL, type SignFacts, type SignSet } from './signs.ts';
 import type { Element } from './types.ts';
 

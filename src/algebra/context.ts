@@ -5,7 +5,9 @@ import type { FunctionDescription } from '../functions/description.ts';
 import type { Kernel, KernelShape, KernelTable } from './kernel.ts';
 import { monomialOf, UNIT } from './monomial.ts';
 import { compareExponents, type Exponent } from './exponent.ts';
-import { addElements, elementFromMonomial, elementKey, isQuotient, negateElement, normalise } from './quotient.ts';
+import { addElements, elementFromMonomial, elementKey, negateElement } from './quotient.ts';
+import { isQuotient } from './quotientParts.ts';
+import { normalise } from './normalForm.ts';
 import type { SignRules } from './signs.ts';
 import type { Element, Truth } from './types.ts';
 

@@ -4,8 +4,10 @@ import { constantKernel, imaginaryKernel, kernelElement, type Context } from './
 import type { Kernel, KernelShape } from './kernel.ts';
 import type { Monomial } from './monomial.ts';
 import type { Polynomial } from './polynomial.ts';
-import { exponential } from './powers.ts';
-import { addElements, elementFromMonomial, invertElement, isQuotient, kernelsOf, multiplyElements, negateElement, scaleElement, wholePower } from './quotient.ts';
+import { exponential } from './exponentials.ts';
+import { addElements, elementFromMonomial, invertElement, multiplyElements, negateElement, scaleElement, wholePower } from './quotient.ts';
+import { isQuotient } from './quotientParts.ts';
+import { kernelsOf } from './kernelsOf.ts';
 import { isWhole, periodsIn, subtractExponents, type Exponent } from './exponent.ts';
 import { monomialOf } from './monomial.ts';
 import type { Element } from './types.ts';

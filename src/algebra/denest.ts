@@ -5,7 +5,9 @@ import { integerRoot } from './integers.ts';
 import type { Kernel } from './kernel.ts';
 import { monomialOf, multiplyMonomials, withoutKernel, exponentIn } from './monomial.ts';
 import { kernelsIn, type Term } from './polynomial.ts';
-import { addElements, elementFromMonomial, invertElement, isQuotient, multiplyElements, negateElement, normalise, scaleElement } from './quotient.ts';
+import { addElements, elementFromMonomial, invertElement, multiplyElements, negateElement, scaleElement } from './quotient.ts';
+import { isQuotient } from './quotientParts.ts';
+import { normalise } from './normalForm.ts';
 import { positiveRationalPower } from './radicals.ts';
 import type { Element } from './types.ts';
 

@@ -8,7 +8,7 @@ import { exponentToRational, isWhole, type Exponent } from './exponent.ts';
 import type { Kernel, KernelTable } from './kernel.ts';
 import type { Monomial } from './monomial.ts';
 import { isOnePolynomial, type Polynomial } from './polynomial.ts';
-import { partsOf } from './quotient.ts';
+import { partsOf } from './quotientParts.ts';
 import type { Element } from './types.ts';
 
 export interface Evaluator {

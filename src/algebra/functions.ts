@@ -2,8 +2,10 @@
 import { Declined } from '../outcome.ts';
 import { algebraicCall } from './algebraicNumber.ts';
 import type { Context } from './context.ts';
-import { ELEMENTARY_RULES, opaque } from './elementary.ts';
-import { elementKey, isQuotient, negateElement } from './quotient.ts';
+import { ELEMENTARY_RULES } from './elementary.ts';
+import { opaque } from './circularFunctions.ts';
+import { elementKey, negateElement } from './quotient.ts';
+import { isQuotient } from './quotientParts.ts';
 import { toExpression } from './toExpression.ts';
 import type { Element } from './types.ts';
 

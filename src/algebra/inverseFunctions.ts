@@ -4,8 +4,11 @@ import { isZeroRational, minus, type Context } from './context.ts';
 import type { Kernel } from './kernel.ts';
 import { exponentIn, UNIT, withoutKernel } from './monomial.ts';
 import { kernelsIn, type Term } from './polynomial.ts';
-import { divideElements, exponential } from './powers.ts';
-import { isQuotient, multiplyElements, negateElement, normalise } from './quotient.ts';
+import { divideElements } from './powers.ts';
+import { exponential } from './exponentials.ts';
+import { isQuotient } from './quotientParts.ts';
+import { normalise } from './normalForm.ts';
+import { multiplyElements, negateElement } from './quotient.ts';
 import type { Element } from './types.ts';
 
 /** True if the numerator is q W + p with W a Lambert function, p and q free of it, and z differs from c exp(c) for c = -p/q (DLMF 4.13.1). */

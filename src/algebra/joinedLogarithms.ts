@@ -7,7 +7,10 @@ import { kernelElement, type Context, type JoinedLogarithm } from './context.ts'
 import type { Kernel } from './kernel.ts';
 import { exponentIn, isUnit, UNIT, withoutKernel } from './monomial.ts';
 import { isOnePolynomial, kernelsIn, type Polynomial, type Term } from './polynomial.ts';
-import { addElements, elementKey, invertElement, isQuotient, kernelsOf, multiplyElements, negateElement, normalise, partsOf, scaleElement, wholePower } from './quotient.ts';
+import { addElements, elementKey, invertElement, multiplyElements, negateElement, scaleElement, wholePower } from './quotient.ts';
+import { isQuotient, partsOf } from './quotientParts.ts';
+import { normalise } from './normalForm.ts';
+import { kernelsOf } from './kernelsOf.ts';
 import type { Element } from './types.ts';
 
 /** Longer sums are not worth the search. */

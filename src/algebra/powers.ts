@@ -1,23 +1,22 @@
-/** Powers, exponentials and logarithms with principal branches. */
+/** Rational powers with principal branches, absolute values, division. */
 import { Q, type Rational } from '../expression/index.ts';
-import { constantKernel, expKernel, imaginaryKernel, isZeroRational, kernelElement, logKernel, minus, powerKernel, rationalOf, undecided, valueless, withSquaresJoined, type Context } from './context.ts';
-import { compareExponents, exponentFromRational, isWhole, multiplyExponents, type Exponent } from './exponent.ts';
+import { type Context, imaginaryKernel, isZeroRational, kernelElement, powerKernel, rationalOf, undecided, valueless, withSquaresJoined } from './context.ts';
 import { denestedCubeRoot, denestedSquareRoot, dependentSquareRoot } from './denest.ts';
-import { factorInteger } from './integers.ts';
-import { noteLogarithm } from './joinedLogarithms.ts';
+import { compareExponents, type Exponent, exponentFromRational, isWhole, multiplyExponents } from './exponent.ts';
 import type { Kernel } from './kernel.ts';
-import { monomialOf, multiplyMonomials, UNIT, type Monomial } from './monomial.ts';
-import { isOnePolynomial, kernelsIn, scalePolynomial, type Polynomial } from './polynomial.ts';
-import { addElements, elementFromMonomial, elementFromPolynomial, elementKey, invertElement, isQuotient, multiplyElements, negateElement, partsOf, scaleElement, wholePower } from './quotient.ts';
+import { monomialOf, multiplyMonomials } from './monomial.ts';
+import { isOnePolynomial, kernelsIn, type Polynomial } from './polynomial.ts';
+import { addElements, elementFromMonomial, elementKey, invertElement, multiplyElements, negateElement, scaleElement, wholePower } from './quotient.ts';
+import { isQuotient, partsOf } from './quotientParts.ts';
 import { positiveRationalPower, radicandPower } from './radicals.ts';
-import { isNonNegative, isNonZero, isRealSet, NEGATIVE, NIL, POSITIVE } from './signs.ts';
-import { additiveTerms, asElement, byImaginaryUnit, rationalMultiple, singleKernel } from './split.ts';
+import { isNonNegative, isRealSet, NEGATIVE, NIL } from './signs.ts';
+import { asElement, byImaginaryUnit, singleKernel } from './split.ts';
 import { squareFreeFactors } from './squareFree.ts';
-import { cosineOfPi, sineOfPi } from './unitCircle.ts';
 import type { Element } from './types.ts';
+import { cosineOfPi, sineOfPi } from './unitCircle.ts';
 
-const times = (ctx: Context, a: Element, b: Element): Element => multiplyElements(ctx.table, a, b);
-const plus = (ctx: Context, a: Element, b: Element): Element => addElements(ctx.table, a, b);
+export const times = (ctx: Context, a: Element, b: Element): Element => multiplyElements(ctx.table, a, b);
+export const plus = (ctx: Context, a: Element, b: Element): Element => addElements(ctx.table, a, b);
 
 /** (-1)^r = exp(i pi r). */
 export function rootOfUnity(ctx: Context, r: Rational): Element {
@@ -148,7 +147,7 @@ function radicandRationalPower(ctx: Context, u: Element, r: Rational): Element {
   return radicandPower(ctx, u, exponentFromRational(r));
 }
 
-const isNumericRadicand = (ctx: Context, u: Element): boolean => isQuotient(u) && u.denominator.length === 0 && [...kernelsIn(u.numerator)].every((k) => ctx.table.relations[k]?.numeric === true);
+export const isNumericRadicand = (ctx: Context, u: Element): boolean => isQuotient(u) && u.denominator.length === 0 && [...kernelsIn(u.numerator)].every((k) => ctx.table.relations[k]?.numeric === true);
 
 /** sqrt(x + i y) for numbers whose modulus is rational, by DLMF 4.8(i) halving of the argument; else null. */
 function complexSquareRoot(ctx: Context, a: Element): Element | null {
@@ -221,197 +220,4 @@ export function divideElements(ctx: Context, a: Element, b: Element): Element {
   }
   requireNonZero(ctx, b);
   return times(ctx, a, invertElement(ctx.table, b));
-}
-
-/** exp(a): sums become products, logarithms become powers, multiples of i pi roots of unity. */
-export function exponential(ctx: Context, a: Element): Element {
-  let result: Element = Q.ONE;
-  for (const term of additiveTerms(ctx, a)) result = times(ctx, result, exponentialOfTerm(ctx, term));
-  return result;
-}
-
-function exponentialOfTerm(ctx: Context, term: Element): Element {
-  const { coefficient, unit } = rationalMultiple(term);
-  if (!isQuotient(unit)) return kernelElement(ctx, expKernel(ctx, Q.ONE), exponentFromRational(coefficient));
-  const pi = constantKernel(ctx, 'pi').index;
-  const i = imaginaryKernel(ctx).index;
-  const plain = isOnePolynomial(unit.numerator) && unit.denominator.length === 0;
-  if (plain) {
-    const { kernels, exponents } = unit.monomial;
-    if (kernels.length === 2 && kernels.includes(pi) && kernels.includes(i) && exponents.every((e) => e === 1)) return rootOfUnity(ctx, coefficient);
-  }
-  // A factor log(x) turns the rest into an exponent of x.
-  for (let j = 0; j < unit.monomial.kernels.length; j += 1) {
-    const kernel = ctx.table.kernels[unit.monomial.kernels[j] as number] as Kernel;
-    if (kernel.shape.kind !== 'log' || unit.monomial.exponents[j] !== 1) continue;
-    const rest = times(ctx, unit, kernelElement(ctx, kernel, -1));
-    const base = kernel.shape.argument;
-    if (!isQuotient(rest)) return rationalPower(ctx, base, Q.multiply(coefficient, rest));
-    return kernelElement(ctx, powerKernel(ctx, base, rest), exponentFromRational(coefficient));
-  }
-  if (plain && coefficient.den === 1n) {
-    const inverse = exponentialOfInverse(ctx, unit.monomial, i);
-    if (inverse) return wholePower(ctx.table, inverse, Number(coefficient.num));
-  }
-  if (plain && unit.monomial.kernels.includes(pi) && unit.monomial.kernels.includes(i)) {
-    const others = unit.monomial.kernels.filter((k) => k !== pi && k !== i).map((k) => ctx.table.kernels[k] as Kernel);
-    const whole = others.every((k) => k.shape.kind === 'parameter' && ctx.isInteger(k.shape.name)) && unit.monomial.exponents.every((e) => isWhole(e) && e > 0);
-    if (whole && unit.monomial.exponents[unit.monomial.kernels.indexOf(pi)] === 1) {
-      const kernel = ctx.table.intern(`exp ${elementKey(unit)}`, () => ({
-        shape: { kind: 'exp', unit },
-        relation: { period: 2, value: [{ monomial: UNIT, coefficient: 1n }], pure: true, numeric: false },
-      }));
-      return kernelElement(ctx, kernel, exponentFromRational(coefficient));
-    }
-  }
-  return kernelElement(ctx, expKernel(ctx, unit), exponentFromRational(coefficient));
-}
-
-/** exp(i asin x), exp(i acos x), exp(i atan x), exp(asinh x), exp(acosh x), exp(atanh x) without the inverse function (DLMF 4.23(iv), 4.37(iv)), and exp(W(z)) = z/W(z) for z other than 0 (DLMF 4.13.1); null for anything else. */
-function exponentialOfInverse(ctx: Context, m: Monomial, i: number): Element | null {
-  const circular = m.kernels.length === 2 && m.kernels.includes(i);
-  if ((!circular && m.kernels.length !== 1) || m.exponents.some((e) => e !== 1)) return null;
-  const index = m.kernels.find((k) => k !== i);
-  const shape = index === undefined ? undefined : (ctx.table.kernels[index] as Kernel).shape;
-  const x = shape?.kind === 'call' ? shape.args[0] : undefined;
-  if (shape?.kind !== 'call' || x === undefined) return null;
-  const [, z] = shape.args;
-  if (shape.id === 'lambertW' && !circular && index !== undefined && z !== undefined && isNonZero(ctx.signs.of(z))) return divideElements(ctx, z, kernelElement(ctx, ctx.table.kernels[index] as Kernel));
-  const unit = kernelElement(ctx, imaginaryKernel(ctx));
-  const root = (a: Element): Element => rationalPower(ctx, a, Q.HALF);
-  const square = times(ctx, x, x);
-  const one = (a: Element): Element => plus(ctx, Q.ONE, a);
-  switch (`${circular ? 'i ' : ''}${shape.id}`) {
-    case 'i asin':
-      return plus(ctx, root(one(negateElement(square))), times(ctx, unit, x));
-    case 'i acos':
-      return plus(ctx, x, times(ctx, unit, root(one(negateElement(square)))));
-    case 'i atan':
-      return isRealSet(ctx.signs.of(x)) ? divideElements(ctx, one(times(ctx, unit, x)), root(one(square))) : null;
-    case 'asinh':
-      return plus(ctx, x, root(one(square)));
-    case 'acosh':
-      return plus(ctx, x, times(ctx, root(plus(ctx, x, Q.MINUS_ONE)), root(one(x))));
-    case 'atanh':
-      return isNonNegative(ctx.signs.of(one(negateElement(square)))) ? divideElements(ctx, one(x), root(one(negateElement(square)))) : null;
-    default:
-      return null;
-  }
-}
-
-/** log|c| for a rational c that is not zero. */
-function logOfRational(ctx: Context, c: Rational): Element {
-  let result: Element = Q.ZERO;
-  const part = (n: bigint, sign: bigint): void => {
-    for (const { base, exponent } of factorInteger(n < 0n ? -n : n)) {
-      result = plus(ctx, result, scaleElement(kernelElement(ctx, logKernel(ctx, Q.rational(base))), { num: sign * BigInt(exponent), den: 1n }));
-    }
-  };
-  part(c.num, 1n);
-  part(c.den, -1n);
-  return result;
-}
-
-const multiple = (a: Element, e: Exponent): Element => scaleElement(a, typeof e === 'number' ? Q.rational(e) : Q.rational(e.p, e.q));
-
-/** log a, principal value: positive factors split off, the rest stays together. */
-export function logarithm(ctx: Context, a: Element): Element {
-  const value = splitLogarithm(ctx, withSquaresJoined(ctx, a));
-  noteLogarithm(ctx, a, value);
-  return value;
-}
-
-function splitLogarithm(ctx: Context, a: Element): Element {
-  requireNonZero(ctx, a, 'argument of a logarithm');
-  const parts = partsOf(a);
-  let result = logOfRational(ctx, parts.content);
-  let negative = parts.content.num < 0n;
-  let open: Element = Q.ONE;
-  const take = (factor: Element): void => void (open = times(ctx, open, factor));
-  parts.monomial.kernels.forEach((index, j) => {
-    const kernel = ctx.table.kernels[index] as Kernel;
-    const e = parts.monomial.exponents[j] as Exponent;
-    const sign = ctx.signs.ofKernel(kernel);
-    const shape = kernel.shape;
-    if (shape.kind === 'exp' && isNonNegative(sign)) result = plus(ctx, result, multiple(shape.unit, e));
-    else if (shape.kind === 'power' && isNonNegative(sign)) result = plus(ctx, result, multiple(times(ctx, shape.unit, splitLogarithm(ctx, shape.base)), e));
-    else if (shape.kind === 'integer') result = plus(ctx, result, multiple(logOfRational(ctx, Q.rational(shape.value)), e));
-    else if (shape.kind === 'radicand' && isNonNegative(sign)) result = plus(ctx, result, multiple(splitLogarithm(ctx, shape.base), e));
-    else if (isNonNegative(sign)) result = plus(ctx, result, multiple(kernelElement(ctx, logKernel(ctx, kernelElement(ctx, kernel))), e));
-    else if (isWhole(e) && (sign & ~(NEGATIVE | NIL)) === 0) {
-      result = plus(ctx, result, multiple(kernelElement(ctx, logKernel(ctx, negateElement(kernelElement(ctx, kernel)))), e));
-      if (e % 2 !== 0) negative = !negative;
-    } else if (isWhole(e) && isRealSet(sign) && shape.kind !== 'exp' && shape.kind !== 'power') {
-      const even = e % 2 === 0 ? e : e - 1;
-      if (even !== 0) result = plus(ctx, result, multiple(splitLogarithm(ctx, absolute(ctx, kernelElement(ctx, kernel))), even));
-      if (even !== e) take(kernelElement(ctx, kernel));
-    } else take(kernelElement(ctx, kernel, e));
-  });
-  const polynomial = (f: Polynomial, power: number): void => {
-    if (isOnePolynomial(f)) return;
-    for (const factor of squareFreeFactors(f, ctx.table.check)) {
-      const e = factor.exponent * power;
-      const u = asElement(ctx, factor.polynomial);
-      const sign = ctx.signs.of(u);
-      if (isNonNegative(sign)) result = plus(ctx, result, multiple(kernelElement(ctx, logKernel(ctx, u)), e));
-      else if ((sign & ~(NEGATIVE | NIL)) === 0) {
-        result = plus(ctx, result, multiple(kernelElement(ctx, logKernel(ctx, elementFromPolynomial(ctx.table, scalePolynomial(factor.polynomial, -1n)))), e));
-        if (e % 2 !== 0) negative = !negative;
-      } else if (isRealSet(sign)) {
-        const even = e % 2 === 0 ? e : e - 1;
-        if (even !== 0) result = plus(ctx, result, multiple(splitLogarithm(ctx, absolute(ctx, u)), even));
-        if (even !== e) take(u);
-      } else take(wholePower(ctx.table, u, e));
-    }
-  };
-  polynomial(parts.numerator, 1);
-  for (const f of parts.denominator) polynomial(f.polynomial, -f.exponent);
-  const iPi = times(ctx, kernelElement(ctx, imaginaryKernel(ctx)), kernelElement(ctx, constantKernel(ctx, 'pi')));
-  if (!isQuotient(open)) return (open.num < 0n) !== negative ? plus(ctx, result, iPi) : result;
-  const base = negative ? negateElement(open) : open;
-  const single = singleKernel(open);
-  const kernel = single ? (ctx.table.kernels[single.kernel] as Kernel) : null;
-  if (single && kernel && kernel.shape.kind === 'imaginary') return plus(ctx, result, scaleElement(iPi, Q.rational(negative ? -1 : 1, 2)));
-  if (single && kernel && !negative && kernel.shape.kind === 'exp') {
-    // log exp(i t) = i t for -pi < t <= pi only; unknown otherwise.
-    const im = byImaginaryUnit(ctx, multiple(kernel.shape.unit, single.exponent));
-    const pi = kernelElement(ctx, constantKernel(ctx, 'pi'));
-    if (isZeroRational(im.re) && isNonNegative(ctx.signs.of(minus(ctx, pi, im.im))) && ctx.signs.of(plus(ctx, pi, im.im)) === POSITIVE) return plus(ctx, result, multiple(kernel.shape.unit, single.exponent));
-  }
-  if (single && kernel && !negative && kernel.shape.kind !== 'exp' && kernel.shape.kind !== 'power' && compareExponents(single.exponent, -1) > 0 && compareExponents(single.exponent, 1) <= 0) {
-    return plus(ctx, result, multiple(kernelElement(ctx, logKernel(ctx, kernel.shape.kind === 'radicand' ? kernel.shape.base : kernelElement(ctx, kernel))), single.exponent));
-  }
-  return plus(ctx, result, logarithmOfNumber(ctx, base) ?? kernelElement(ctx, logKernel(ctx, base)));
-}
-
-/** log(x + i y) = log(x^2 + y^2)/2 + i atan2(y, x) for real algebraic numbers x and y, y not zero; else null. */
-function logarithmOfNumber(ctx: Context, a: Element): Element | null {
-  const { re, im } = byImaginaryUnit(ctx, a);
-  if (isZeroRational(im) || !isRealAlgebraic(ctx, re) || !isRealAlgebraic(ctx, im)) return null;
-  const i = kernelElement(ctx, imaginaryKernel(ctx));
-  const pi = kernelElement(ctx, constantKernel(ctx, 'pi'));
-  const size = scaleElement(logarithm(ctx, plus(ctx, times(ctx, re, re), times(ctx, im, im))), Q.HALF);
-  const up = signOfReal(ctx, im);
-  const right = isZeroRational(re) ? 0 : signOfReal(ctx, re);
-  if (up === null || right === null) return null;
-  if (right === 0) return plus(ctx, size, times(ctx, i, scaleElement(pi, Q.rational(up, 2))));
-  const angle = ctx.call('atan', [divideElements(ctx, im, re)]);
-  // Of other numbers the logarithm stays whole: the parts would bring nested roots.
-  const familiar = (rationalOf(re) && rationalOf(im)) || isRationalMultipleOfPi(ctx, angle);
-  if (!familiar) return null;
-  return plus(ctx, size, times(ctx, i, right > 0 ? angle : plus(ctx, angle, scaleElement(pi, Q.rational(up)))));
-}
-const isRationalMultipleOfPi = (ctx: Context, a: Element): boolean => singleKernel(rationalMultiple(a).unit)?.kernel === constantKernel(ctx, 'pi').index;
-const signOfReal = (ctx: Context, a: Element): -1 | 1 | null => (isQuotient(a) ? ctx.signOfNumber(a) : a.num > 0n ? 1 : -1);
-const isRealAlgebraic = (ctx: Context, a: Element): boolean => !isQuotient(a) || (isRealSet(ctx.signs.of(a)) && isNumericRadicand(ctx, a) && a.monomial.kernels.every((k) => ctx.table.relations[k]?.numeric === true));
-
-/** a^b, principal value, for any exponent. */
-export function generalPower(ctx: Context, a: Element, b: Element): Element {
-  const r = rationalOf(b);
-  if (r) return rationalPower(ctx, a, r);
-  if (isZeroRational(a)) {
-    if (ctx.signs.of(b) === POSITIVE) return Q.ZERO;
-    throw undecided('A power of zero with this exponent has no settled value; state that the exponent is positive.');
-  }
-  return exponential(ctx, times(ctx, b, logarithm(ctx, a)));
 }

@@ -5,7 +5,8 @@ import { exponentFromRational, type Exponent } from './exponent.ts';
 import { factorInteger } from './integers.ts';
 import { monomialOf, multiplyMonomials } from './monomial.ts';
 import { kernelsIn } from './polynomial.ts';
-import { elementFromMonomial, elementKey, multiplyElements, partsOf } from './quotient.ts';
+import { elementFromMonomial, elementKey, multiplyElements } from './quotient.ts';
+import { partsOf } from './quotientParts.ts';
 import type { Element } from './types.ts';
 
 /** |c|^r for a rational c that is not zero. */

@@ -5,7 +5,7 @@ import { compareExponents, isWhole, type Exponent } from './exponent.ts';
 import type { Kernel, KernelTable } from './kernel.ts';
 import type { Monomial } from './monomial.ts';
 import { isOnePolynomial, polynomialKey, type Polynomial } from './polynomial.ts';
-import { isQuotient, partsOf } from './quotient.ts';
+import { isQuotient, partsOf } from './quotientParts.ts';
 import type { Element } from './types.ts';
 
 /** Bits: negative, zero, positive, not real. */

@@ -4,7 +4,9 @@ import { kernelElement, imaginaryKernel, type Context } from './context.ts';
 import type { Exponent } from './exponent.ts';
 import { exponentIn, UNIT, withoutKernel } from './monomial.ts';
 import { isOnePolynomial, type Term } from './polynomial.ts';
-import { addElements, isQuotient, multiplyElements, normalise, type Quotient } from './quotient.ts';
+import { addElements, multiplyElements } from './quotient.ts';
+import { isQuotient, type Quotient } from './quotientParts.ts';
+import { normalise } from './normalForm.ts';
 import type { Element } from './types.ts';
 
 /** The element as a sum of terms, each with the whole denominator. */

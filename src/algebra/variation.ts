@@ -4,7 +4,8 @@ import { NEVER_ZERO, NOT_ANALYTIC, TRANSCENDENTAL } from './callSigns.ts';
 import type { Kernel, KernelTable } from './kernel.ts';
 import { exponentIn } from './monomial.ts';
 import { isOnePolynomial } from './polynomial.ts';
-import { allKernels, isQuotient, kernelsOf } from './quotient.ts';
+import { allKernels, kernelsOf } from './kernelsOf.ts';
+import { isQuotient } from './quotientParts.ts';
 import type { Element } from './types.ts';
 
 /** Parameters that vary continuously: not those stated to be integers. */

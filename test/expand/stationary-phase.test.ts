@@ -38,3 +38,22 @@ describe('stationary phase', () => {
     expect(outcomeOf(latex(formula), { at: 'inf' }).ok).toBe(false);
   });
 });
+
+describe('waves over a limit that grows', () => {
+  it.each([
+    // Si and Ci: DLMF 6.2.10, 6.2.13, 6.12.3, 6.12.4; Re E_2(ix)/x: DLMF 8.20.2; the Fresnel integral: DLMF 7.5.3, 7.12.2; the square of the sine through Si(2x).
+    ['\\int_0^x \\frac{\\sin t}{t}\\,dt', 'π/2 − cos(x)/x − sin(x)/x² + 2cos(x)/x³ + O(x⁻⁴)'],
+    ['\\int_x^\\infty \\frac{\\cos t}{t}\\,dt', '−sin(x)/x + cos(x)/x² + 2sin(x)/x³ − 6cos(x)/x⁴ + O(x⁻⁵)'],
+    ['\\int_x^\\infty \\frac{\\cos t}{t^2}\\,dt', '−sin(x)/x² + 2cos(x)/x³ + 6sin(x)/x⁴ − 24cos(x)/x⁵ + O(x⁻⁶)'],
+    ['\\int_0^x \\cos(t^2)\\,dt', '√(2π)/4 + sin(x²)/(2x) − cos(x²)/(4x³) − 3sin(x²)/(8x⁵) + O(x⁻⁷)'],
+    ['\\int_x^\\infty \\frac{\\sin^2 t}{t^2}\\,dt', '1/(2x) + sin(2x)/(4x²) − cos(2x)/(4x³) − 3sin(2x)/(8x⁴) + O(x⁻⁵)'],
+    // Compared with quadrature by mpmath 1.3.0 at x = 8 ... 170.
+    ['\\int_x^\\infty \\frac{\\ln t\\cos t}{t^2}\\,dt', '−ln(x)·sin(x)/x² + 2ln(x)·cos(x)/x³ − cos(x)/x³ + 6ln(x)·sin(x)/x⁴ + O(x⁻⁴)'],
+    ['\\int_x^{2x} \\frac{\\sin t}{t}\\,dt', 'cos(x)/x − cos(2x)/(2x) + sin(x)/x² − sin(2x)/(4x²) + O(x⁻³)'],
+  ])('%s', (formula, expected) => {
+    expect(textOf(formula)).toBe(expected);
+  });
+  it('has no value where it does not converge', () => {
+    expect(outcomeOf(latex('\\int_x^\\infty t\\cos t\\,dt'), { at: 'inf' }).ok).toBe(false);
+  });
+});

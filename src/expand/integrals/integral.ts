@@ -2,7 +2,7 @@
 import type { Element } from '../../algebra/types.ts';
 import { build, children, type Expression, type IntegralNode, Q, substitute } from '../../expression/index.ts';
 import { Declined } from '../../outcome.ts';
-import { add, type Context, eventualSign, exactOf, growth, integrate, isKnownZero, isZero, monomialOf, type Multi, multiply, orderSeries, Series, split, subtract, theta, unitMonomial, withExact } from '../../series/index.ts';
+import { add, type Context, eventualSign, exactOf, growth, integrate, isKnownZero, isOscillating, isZero, monomialOf, type Multi, multiply, orderSeries, Series, split, subtract, theta, unitMonomial, withExact } from '../../series/index.ts';
 import { openSide } from '../open-side.ts';
 import { type Evaluate, bind, type Session } from '../session.ts';
 import { completeIntegral, SHIFT } from './complete.ts';
@@ -12,6 +12,7 @@ import { regularOn } from './monotone.ts';
 import { byStationaryPhase } from './phase.ts';
 import { finiteIntegral } from './regular.ts';
 import { rescaled } from './rescale.ts';
+import { integrateWaves } from './waves.ts';
 import { integrableAt, laplaceForm, watson } from './watson.ts';
 
 export function evaluateIntegral(s: Session, e: IntegralNode, evaluate: Evaluate): Multi {
@@ -188,7 +189,21 @@ function sameLimit(s: Session, a: End, b: End): boolean {
 function primitiveAt(s: Session, e: IntegralNode, name: string, end: Series, evaluate: Evaluate): Multi {
   const value = evaluate(bind(s, [[name, end]]), e.body);
   if (isKnownZero(s.context, value)) return Q.ZERO;
-  return integrate(s.context, multiply(s.context, value, theta(s.context, end)));
+  const c = s.context;
+  const speed = multiply(c, value, theta(c, end));
+  try {
+    return integrate(c, checked(c, speed));
+  } catch (error) {
+    if (!(error instanceof Declined) || error.failure.code !== 'no-expansion' || !c.oscillation) throw error;
+    return integrateWaves(s, speed, evaluate);
+  }
+}
+
+/** Terms are integrated when they are asked for; an oscillation is met at once where the first of them oscillates. */
+function checked(c: Context, m: Multi): Multi {
+  const lead = m instanceof Series ? monomialOf(c, m)?.constant : m;
+  if (lead && isOscillating(c, lead)) throw new Declined('no-expansion', 'The integral of this oscillating function is not expanded here; write its products of waves as sums.');
+  return m;
 }
 
 const limitTree = (s: Session, end: End, written: Expression): Expression => (end.moving ? exactOf(s.context, end.moving) : written);

@@ -1,5 +1,5 @@
 /** The formulas of a document that may hold claims: mathematics, Markdown, comments of code, plain lines. */
-import { type Expression, type Span, walk } from '../expression/index.ts';
+import { type ApplyNode, type Expression, type Span, type SymbolNode, walk } from '../expression/index.ts';
 import { type DocumentContent, type Formula, languageOf, type MacroTable, readDocument, readFormula, type Region } from '../read/index.ts';
 import { type CheckMemory, macrosUsed, movedTree } from './memory.ts';
 
@@ -213,8 +213,8 @@ const ENGLISH = /^(?:the|errors?|formula|approximations?|approximate|use|expansi
 
 /** Words of running text that were read as symbols. */
 function isWordy(e: Expression, text: string): boolean {
-  const words = [...walk(e)].filter((n) => (n.kind === 'symbol' || n.kind === 'apply') && /^[A-Za-z]{3,}$/.test(n.name) && n.span && /^[A-Za-z]{3,}$/.test(text.slice(n.span.start, n.span.start + n.name.length)));
+  const words = [...walk(e)].filter((n): n is SymbolNode | ApplyNode => (n.kind === 'symbol' || n.kind === 'apply') && /^[A-Za-z]{3,}$/.test(n.name) && n.span !== undefined && /^[A-Za-z]{3,}$/.test(text.slice(n.span.start, n.span.start + n.name.length)));
   const [first] = words;
-  const leads = e.span && first?.span?.start === e.span.start && /^[A-Za-z]+\s+[A-Za-z(\\]/.test(text.slice(first.span.start, first.span.start + 60)) && !first.name.startsWith('\\');
-  return leads === true || words.length > 1 || words.some((n) => (n.kind === 'symbol' || n.kind === 'apply') && ENGLISH.test(n.name));
+  const leads = e.span && first?.span?.start === e.span.start && /^[A-Za-z]+\s+[A-Za-z(\\]/.test(text.slice(first.span.start, first.span.start + 60));
+  return leads === true || words.length > 1 || words.some((n) => ENGLISH.test(n.name));
 }

@@ -44,7 +44,8 @@ const WORDS: Readonly<Record<string, string>> = { sine: 'sin', cosine: 'cos', ta
 export function remarksIn(text: string, polynomials: readonly PolynomialCode[], comments: readonly CommentText[], branches: readonly SeriesBranch[]): readonly Remark[] {
   const out: Remark[] = [];
   for (const comment of comments) {
-    if (!/\d/.test(comment.text)) continue;
+    // A note to the tool asks; it promises nothing.
+    if (!/\d/.test(comment.text) || /^\s*leading-order\s*:/i.test(comment.text)) continue;
     const polynomial = beside(text, comment, polynomials);
     if (!polynomial) continue;
     const branch = branches.find((b) => b.seriesSpan.start <= polynomial.span.start && polynomial.span.end <= b.seriesSpan.end);

@@ -13,6 +13,8 @@ import { limitText, plainSymbol, said, saidEach, sourcesText } from './words.ts'
 
 const DEADLINE_MS = 300;
 const PICTURE_DEADLINE_MS = 150;
+/** The table comes right behind the expansion; a hover without it would stay without it until it is opened again. */
+const TABLE_GRACE_MS = 120;
 /** The first picture waits for the typesetter's fonts. */
 const FIRST_PICTURE_DEADLINE_MS = 500;
 const PICTURE_WIDTH = 480;
@@ -45,10 +47,11 @@ export function registerHover(services: Services): vscode.Disposable {
       const saysMore = answer.ok && (selected !== null || first.worthwhile);
       // The picture does not wait for the table, nor the expansion for either.
       const picture = saysMore && settings.hover === 'picture' ? within(drawnBefore ? PICTURE_DEADLINE_MS : FIRST_PICTURE_DEADLINE_MS, drawn(services, answer)) : null;
-      const full = saysMore && !answer.exact && !first.asked.interval ? await within(left(), services.consultant.consult(document, place, ['reading', 'reach'], {}, token)) : first;
-      if (token.isCancellationRequested) return null;
+      const table = saysMore && !answer.exact && !first.asked.interval ? services.consultant.consult(document, place, ['reading', 'reach'], {}, token) : null;
       const made = await picture;
       drawnBefore ||= made !== null;
+      const full = table ? await within(Math.max(left(), TABLE_GRACE_MS), table) : first;
+      if (token.isCancellationRequested) return null;
       const hover = render(document, full ?? first, selected !== null, made);
       if (hover && full && (made || !picture)) finished.set(first, (finished.get(first) ?? new Map<string, vscode.Hover>()).set(style, hover));
       return hover;

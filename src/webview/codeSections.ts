@@ -55,9 +55,9 @@ export function guardSection(shown: Guarded, into: HTMLElement, settle: (control
         'section',
         {},
         h('h2', {}, t('ranges')),
-        h('table', { class: 'figures' }, h('thead', {}, h('tr', {}, ...[t('from'), t('to'), t('form'), t('worst')].map((name) => h('th', { scope: 'col' }, name)))), h('tbody', {}, ...answer.ranges.map((range) => h('tr', {}, h('td', { title: range.from }, brief(range.from)), h('td', { title: range.to }, brief(range.to)), h('td', {}, h('code', {}, range.form)), h('td', {}, range.bound))))),
+        h('table', { class: 'figures' }, h('thead', {}, h('tr', {}, ...[t('range'), t('form'), t('worst')].map((name) => h('th', { scope: 'col' }, name)))), h('tbody', {}, ...answer.ranges.map((range) => h('tr', {}, h('td', { title: `${range.from} … ${range.to}` }, h('div', {}, `${brief(range.from)} …`), h('div', {}, brief(range.to))), h('td', { class: 'form' }, h('code', {}, range.form)), h('td', {}, range.bound))))),
       ),
-    answer.forms.length > 0 && h('section', {}, h('h2', {}, t('forms')), h('table', { class: 'figures' }, h('tbody', {}, ...answer.forms.map((form) => h('tr', {}, h('td', {}, h('code', {}, form.text), ...(form.identities ?? []).map((identity) => h('div', { class: 'muted' }, identity))), h('td', {}, form.bound)))))),
+    answer.forms.length > 0 && h('section', {}, h('h2', {}, t('forms')), h('table', { class: 'figures' }, h('tbody', {}, ...answer.forms.map((form) => h('tr', {}, h('td', { class: 'form' }, h('code', {}, form.text), ...(form.identities ?? []).map((identity) => h('div', { class: 'muted' }, identity))), h('td', {}, form.bound)))))),
     code(answer.code),
     assumptions(answer.assumptions),
   ];

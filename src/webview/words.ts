@@ -102,6 +102,7 @@ export const WORDS = {
   hex: 'hexadecimal',
   forms: 'Exact forms',
   ranges: 'Which form serves which range',
+  range: 'range',
   form: 'form',
   switch: 'The series takes over below {0}.',
   worst: 'worst relative error',

@@ -31,6 +31,9 @@ describe('accuracy promised beside a polynomial', () => {
     const [first] = found(text, language);
     expect(first).toEqual([verdict, under, fixed]);
   });
+  it('a note to the tool is a question, no promise', () => {
+    expect(found('double stretch(double s) {\n  // leading-order: small s, on |s| <= 0.2, within 1e-7\n  return 1.0 + s * s / 2.0;\n}\n', 'c')).toEqual([]);
+  });
   it('nothing fails where interval, function or variable are not said', () => {
     for (const text of [
       '// max error 1e-9\ndouble s(double x) { return x - x*x*x/6.0; }\n',

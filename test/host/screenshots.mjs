@@ -61,11 +61,11 @@ SCENES.problems = async (page) => {
 
 /** On a cold start the text comes first, without table and picture. */
 async function hoverWithPicture(page, wanted) {
-  const picture = page.locator('.monaco-hover img[src^="data:image/svg"]:visible').first();
-  for (let i = 0; i < 8 && !(await picture.isVisible()); i += 1) {
+  const whole = page.locator('.monaco-hover:visible').filter({ has: page.locator('img[src^="data:image/svg"]') }).filter({ has: page.locator('table') }).first();
+  for (let i = 0; i < 8 && !(await whole.isVisible()); i += 1) {
     await closeHover(page);
     await hoverAtCursor(page, wanted);
-    await picture.waitFor({ timeout: 1500 * (i + 1) }).catch(() => {});
+    await whole.waitFor({ timeout: 1500 * (i + 1) }).catch(() => {});
   }
   await pause(400);
 }
@@ -101,6 +101,7 @@ SCENES.guard = async (page) => {
   await select(page, readFileSync(path.join(DEMO, 'controller.c'), 'utf8'), '(cosh(u) - 1.0) / (u * u)');
   await runCommand(page, 'Leading Order: Guard This Expression');
   const frame = await expansionFrame(page, '#compute');
+  await frame.waitForFunction(() => document.getElementById('variable')?.value === 'u', null, { timeout: PATIENCE });
   await frame.locator('#compute').click();
   await frame.locator('table.figures').first().waitFor({ timeout: PATIENCE });
   await frame.locator('#apply-0').waitFor({ timeout: PATIENCE });

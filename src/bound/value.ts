@@ -25,6 +25,8 @@ export function valueAtArgument(expansion: Expansion, argument: Expression, assu
     const [f, s] = [encloseReal(side.function, environment, precision, describe), encloseReal(sum, environment, precision, describe)];
     if (f === null || s === null) {
       if (precision < 400) continue;
+      const open = names.filter((name) => !parameters.has(name));
+      if (open.length > 0) throw new Declined('needs-assumption', `The value depends on ${open.join(', ')}; assume a value, such as ${open[0] ?? 'a'} = 1.`);
       throw new Declined('undecided', 'The function has no real value at this argument; choose another one.');
     }
     const error = real.subtract(f, s, precision);

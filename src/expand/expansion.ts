@@ -42,6 +42,8 @@ export interface Expansion {
   readonly oscillating: boolean;
   /** In protocol notation (`a > 0`). */
   readonly assumptions: readonly string[];
+  /** Where the variable is a quantity such as v/c or theta(t): the same expansion with one symbol in its place, for numbers. */
+  readonly inOneSymbol?: Expansion;
   /** Names under which algebraic numbers stand in what is read by people; the trees hold their values. */
   readonly names?: readonly { readonly symbol: Expression; readonly value: Expression }[];
   /** The general term in an index (`k`, or the next letter that is free), where proved: the function is its sum over k = 0, 1, 2, ... */

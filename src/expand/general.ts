@@ -1,7 +1,7 @@
 /**
  * The general term of a series of hypergeometric type: f = sum over k >= 0 of coefficient(k) t^(step k + offset).
  * Built from the form of the function only: classical series whose coefficients obey a first-order recurrence in k, with a monomial for their argument, times monomials, and sums of those with equal powers.
- * Sources: DLMF 4.19, 4.33, 4.38, 4.24, 4.6 (elementary), 7.6.1 (erf), 6.6.5 (Si), 10.2.2 and 10.25.2 (Bessel), 25.12.10 (polylogarithm), from memory.
+ * Sources: DLMF 16.2.1 (pFq), 19.5.1, 19.5.2 (K, E), 4.19, 4.33, 4.38, 4.24, 4.6 (elementary), 7.6.1 (erf), 6.6.5 (Si), 10.2.2 and 10.25.2 (Bessel), 25.12.10 (polylogarithm), from memory.
  */
 import { build, dependsOn, type Expression, Q, type Rational } from '../expression/index.ts';
 import { type Budget, Declined } from '../outcome.ts';
@@ -120,9 +120,9 @@ function pattern(s: Search, e: Expression): Pattern | null {
   }
 }
 
-/** One series times monomials. */
+/** One series, or an exponential times a sine or cosine, times monomials. */
 function ofProduct(s: Search, factors: readonly Expression[]): Pattern | null {
-  let found: Pattern | null = null;
+  const series: Expression[] = [];
   let front: Monomial = { coefficient: one, power: Q.ZERO };
   for (const f of factors) {
     const monomials = s.monomials(f);
@@ -131,11 +131,28 @@ function ofProduct(s: Search, factors: readonly Expression[]): Pattern | null {
       front = { coefficient: times(front.coefficient, only.coefficient), power: Q.add(front.power, only.power) };
       continue;
     }
-    if (found) return null;
-    found = pattern(s, f);
-    if (!found) return null;
+    series.push(f);
   }
-  return scaled(found, front);
+  const [first, second] = series;
+  if (series.length > 2 || !first) return null;
+  return scaled(second ? (wave(s, first, second) ?? wave(s, second, first)) : pattern(s, first), front);
+}
+
+/** e^(a u) sin(b u) and e^(a u) cos(b u) for real a, b: imaginary and real part of the sum of (a + b i)^k u^k/k!. */
+function wave(s: Search, growth: Expression, circular: Expression): Pattern | null {
+  const exponent = growth.kind === 'power' && growth.base.kind === 'constant' && growth.base.name === 'e' ? growth.exponent : growth.kind === 'call' && growth.function === 'exp' ? growth.args[0] : undefined;
+  const argument = circular.kind === 'call' && (circular.function === 'sin' || circular.function === 'cos') ? circular.args[0] : undefined;
+  if (!exponent || !argument || circular.kind !== 'call') return null;
+  const [u, v] = [s.monomials(exponent), s.monomials(argument)].map((m) => (m?.length === 1 ? m[0] : undefined));
+  if (!u || !v || !Q.equal(u.power, v.power)) return null;
+  const { field } = s.c;
+  const [a, b] = [field.fromExpression(u.coefficient), field.fromExpression(v.coefficient)];
+  const side = field.sign(a);
+  if ((side !== 1 && side !== -1) || field.isReal(b) !== 'yes') return null;
+  const size = field.power(field.add(field.multiply(a, a), field.multiply(b, b)), Q.HALF);
+  const turn = field.call('atan', [field.divide(b, a)]);
+  const angle = field.toExpression(side === 1 ? turn : field.add(field.fromExpression(build.constant('pi')), turn));
+  return inArgument(s, { coefficient: one, power: u.power }, quotient(product(power(field.toExpression(size), s.k), call(circular.function, product(s.k, angle))), call('factorial', s.k)), 1, 0);
 }
 
 /** e^(c + u) = e^c sum of u^k/k!. */
@@ -218,10 +235,20 @@ function ofCall(s: Search, id: string, args: readonly Expression[]): Pattern | n
         return inArgument(s, u, quotient(product(number(2), sign), product(call('sqrt', build.constant('pi')), factorial(k), odd)), 2, 1);
       case 'sinIntegral':
         return inArgument(s, u, quotient(sign, product(odd, factorial(odd))), 2, 1);
+      case 'ellipticK':
+        return inArgument(s, u, product(quotient(build.constant('pi'), number(2)), power(centralBinomial(k), 2)), 2, 0);
+      case 'ellipticKParameter':
+        return inArgument(s, u, product(quotient(build.constant('pi'), number(2)), power(centralBinomial(k), 2)), 1, 0);
+      case 'ellipticE':
+        return inArgument(s, u, quotient(product(build.constant('pi'), power(centralBinomial(k), 2)), product(number(2), difference(one, product(number(2), k)))), 2, 0);
+      case 'ellipticEParameter':
+        return inArgument(s, u, quotient(product(build.constant('pi'), power(centralBinomial(k), 2)), product(number(2), difference(one, product(number(2), k)))), 1, 0);
       default:
         return null;
     }
   }
+  if (id === 'hypergeometric') return hypergeometricOf(s, u, args);
+  if (id === 'kummerM' && args.length === 3) return hypergeometricOf(s, u, [one, one, ...args]);
   const [parameter] = args;
   if (args.length !== 2 || !parameter) return null;
   if ((id === 'besselJ' || id === 'besselI') && parameter.kind === 'number' && parameter.value.den === 1n && parameter.value.num >= 0n) {
@@ -235,4 +262,29 @@ function ofCall(s: Search, id: string, args: readonly Expression[]): Pattern | n
     return order?.length === 1 && order[0] && Q.isZero(order[0].power) ? inArgument(s, u, quotient(one, power(sum(k, one), order[0].coefficient)), 1, 1) : null;
   }
   return null;
+}
+
+/** (2k)!/(4^k k!^2) = (1/2)_k/k!. */
+const centralBinomial = (k: Expression): Expression => quotient(call('factorial', product(number(2), k)), product(power(number(4), k), power(call('factorial', k), 2)));
+
+/** pFq(a; b; u) = sum of (a_1)_k ... (a_p)_k/((b_1)_k ... (b_q)_k k!) u^k (DLMF 16.2.1); (1)_k = k!. */
+function hypergeometricOf(s: Search, u: Monomial, args: readonly Expression[]): Pattern | null {
+  const [above, below] = args;
+  if (above?.kind !== 'number' || below?.kind !== 'number') return null;
+  const p = Number(above.value.num);
+  const parameters = args.slice(2, -1);
+  if (parameters.length !== p + Number(below.value.num)) return null;
+  const constants = parameters.map((a) => {
+    const parts = s.monomials(a);
+    return parts?.length === 1 && parts[0] && Q.isZero(parts[0].power) ? parts[0].coefficient : null;
+  });
+  if (constants.some((a) => a === null)) return null;
+  const factorial = call('factorial', s.k);
+  const rising = (a: Expression | null): Expression => (a === null || isOne(a) ? factorial : call('pochhammer', a, s.k));
+  const [top, bottom] = [constants.slice(0, p), constants.slice(p)];
+  // One (1)_k above takes the k! below.
+  const spare = top.findIndex((a) => a !== null && isOne(a));
+  const numerator = top.filter((_, j) => j !== spare).map(rising);
+  const denominator = [...bottom.map(rising), ...(spare < 0 ? [factorial] : [])];
+  return inArgument(s, u, denominator.length === 0 ? product(...numerator) : quotient(product(...numerator), product(...denominator)), 1, 0);
 }

@@ -213,6 +213,8 @@ export function lex(text: string, options: LexOptions): Token[] {
         return at + width;
       }
       for (const mark of MARKS) {
+        // `n!=x` sets a factorial equal; only with a space before it is it a sign of its own.
+        if (mark === '!=' && options.notation === 'latex' && !spaced) continue;
         if (body.startsWith(mark, at) && at + mark.length <= source.to) {
           push('mark', mark, at, at + mark.length);
           return at + mark.length;

@@ -1,5 +1,5 @@
 /**
- * What complex numbers, jets and enclosures of trees need of a number type, so that each is written once and runs on balls and on double intervals.
+ * What complex numbers, local models and enclosures of trees need of a number type, so that each is written once and runs on balls and on double intervals.
  * Every operation returns a set that contains the true result for all choices inside the arguments; `null` means not defined on the whole of them.
  */
 import type { ConstantName, Rational } from '../expression/index.ts';

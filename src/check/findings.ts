@@ -17,7 +17,7 @@ import { notationOf, writeIn } from './notation.ts';
 import type { Setting } from './context.ts';
 import { compare, compareSizes, leading } from './size.ts';
 import { settingsFor, type Around, type Asked, type Choice } from './setting.ts';
-import { lastSentence, type Statement, statementAround } from './statements.ts';
+import { lastSentence, SENTENCE, type Statement, statementAround } from './statements.ts';
 import { hasMarks, withoutMarks } from './truncated.ts';
 
 export interface Place {
@@ -360,15 +360,20 @@ function isHeldAgainst(claim: Claim, f: Expression, best: Tried, several: boolea
   if (marked) return certain || failure.matched > 0 || !several || (count > 1 && isTranscendental(f, best.choice.setting.variable));
   if (!isTranscendental(f, best.choice.setting.variable)) return false;
   if (claim.relation === '=') return (count >= 2 && failure.matched >= 1) || (count >= 3 && oneChange());
-  return failure.matched >= 1 || (certain && failure.difference !== null) || ((count >= 2 || isPlainPower(f, best)) && oneChange()) || best === offByConstant;
+  return failure.matched >= 1 || (certain && failure.difference !== null) || ((count >= 2 || isPlainPower(f, best, place)) && oneChange()) || best === offByConstant;
 }
 
+/** Words of an equation to be solved, or one value at which it holds. */
+const SOLVED = /\b(?:roots?|solutions?|solv(?:e|ed|es|ing)|equations?|intersect\w*|cross\w*|zeros?|satisf\w+|fit(?:s|ted|ting)?|slope)\b|\b(?:at|for|when|where)\s+\$?\s*\\?[a-z]+\s*(?:=|\\approx|≈)\s*[\d.]*[1-9]/i;
+
 /** One printed term, a fraction times the very power with which the function begins: no fit and no solution of an equation looks like this. */
-function isPlainPower(f: Expression, { choice, judgement }: Tried): boolean {
+function isPlainPower(f: Expression, { choice, judgement }: Tried, { around }: Place): boolean {
+  const next = around.after.search(SENTENCE);
+  if (SOLVED.test(around.before.slice(lastSentence(around.before))) || SOLVED.test(next < 0 ? around.after : around.after.slice(0, next))) return false;
   if (judgement.kind !== 'fails' || judgement.truncated.terms.length !== 1 || hasDecimals(judgement.truncated.side)) return false;
   const [own, printed] = [leading(choice.setting, f), leading(choice.setting, judgement.truncated.side)];
   if (own.kind !== 'monomial' || printed.kind !== 'monomial' || Q.isZero(own.size.power)) return false;
-  return compareSizes(own.size, printed.size) === 0 && freeSymbols(own.coefficient).length === 0 && freeSymbols(printed.coefficient).length === 0 && ![...walk(printed.coefficient)].some((n) => n.kind === 'constant');
+  return compareSizes(own.size, printed.size) === 0 && ![...walk(printed.coefficient)].some((n) => n.kind === 'constant');
 }
 
 /** The two sides are of one size on a scale of their own (exponentials, n^n), so that only a constant is wrong. */

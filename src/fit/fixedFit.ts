@@ -69,7 +69,7 @@ export function fitFixedPoint(problem: FitProblem, format: FixedFormat, budget: 
     return tryOne(found);
   }
   let found = tolerance ? leastWithin(search, tolerance, budget) : null;
-  if (!found) throw new Declined('bad-request', 'No polynomial of degree up to 160 keeps this tolerance; take a smaller interval or a larger tolerance.');
+  if (!found) throw new Declined('bad-request', 'No polynomial of degree up to 160 keeps this tolerance: the interval is too wide for it, or the function has a corner or a singular point there; take a smaller interval or a larger tolerance.');
   let best: FixedPointFit | null = null;
   for (let tries = 0; tries < 3 && found; tries += 1) {
     const next = tryOne(found);

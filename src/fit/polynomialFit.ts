@@ -106,7 +106,7 @@ function about(centre: Rational, problem: PolynomialProblem, budget: Budget): Po
   const tolerance = problem.tolerance ?? Q.ZERO;
   const goal = relativeGoal(problem);
   let found: Found | null = method === 'taylor' ? taylorWithin(search, goal, 0, budget) : leastWithin(search, goal, budget);
-  if (!found) throw new Declined('bad-request', 'No polynomial of degree up to 160 keeps this tolerance; take a smaller interval or a larger tolerance.');
+  if (!found) throw new Declined('bad-request', 'No polynomial of degree up to 160 keeps this tolerance: the interval is too wide for it, or the function has a corner or a singular point there; take a smaller interval or a larger tolerance.');
   if (method === 'economized') found = economizedOfDegree(search, found.degree, budget);
   let best: Candidate | null = null;
   // The least degree for the approximation alone may lose the tolerance to rounding: then the next ones are tried while that can help.

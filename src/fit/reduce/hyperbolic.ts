@@ -144,7 +144,7 @@ function farTangent(far: Far, budget: Budget): FarPart {
   // 2 e^(-2 c B) <= 2^(1 - p - 4) where 2 c B >= (p + 4) ln 2.
   const bound = shortened(Q.divide(Q.multiply(Q.rational(format.precision + 4), Q.rational(3, 4)), Q.multiply(Q.rational(2), real.lower(c))), SIGNIFICANT);
   const clamped = Q.compare(end, bound) > 0;
-  if (Q.compare(start, bound) >= 0) throw new Declined('bad-request', 'The function is constant on this interval but for less than a rounding; take a smaller interval.');
+  if (Q.compare(start, bound) >= 0) throw new Declined('bad-request', 'The function is constant on this interval but for less than a rounding; write the constant in its place.');
   const left = clamped ? powerOfTwo(-format.precision - 3) : Q.ZERO;
   const u = powerOfTwo(-arithmetic.operations.precision);
   const range = valueRange(whole.function, variable, start);

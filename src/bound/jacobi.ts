@@ -33,6 +33,13 @@ function recurrence(start: readonly [Ball, Ball, Ball], kSquared: Ball, count: n
 const cache = new Map<string, Triple | null>();
 const CACHE_SIZE = 256;
 
+/** sn, cn, dn at one place: dn is positive there (DLMF 22.6.1), and so need not be evaluated by itself. */
+function valuesAt(u: Ball, modulus: Ball, kSquared: Ball, work: number): readonly (Ball | null)[] {
+  const [s, c] = (['jacobiSn', 'jacobiCn'] as const).map((name) => describe(name)?.encloseReal?.([u, modulus], work) ?? null);
+  const d = s ? real.sqrt(real.subtract(real.ONE, real.multiply(kSquared, real.multiply(s, s, work), work), work), work) : null;
+  return [s ?? null, c ?? null, d];
+}
+
 /** The series about `centre` for distances up to `reach`; null where |k| may exceed 1 or a value cannot be enclosed. */
 export function jacobiSeries(id: JacobiName, modulus: Ball, centre: Ball, reach: Ball, precision: number, length: number): RealSeries | null {
   const work = precision + 24;
@@ -41,8 +48,8 @@ export function jacobiSeries(id: JacobiName, modulus: Ball, centre: Ball, reach:
   const key = [modulus, centre].map((b) => `${b.mid},${b.rad},${b.exp}`).join('|') + `|${precision}`;
   let known = cache.get(key);
   if (known === undefined || (known !== null && known[0].length < length)) {
-    const values = (['jacobiSn', 'jacobiCn', 'jacobiDn'] as const).map((name) => describe(name)?.encloseReal?.([centre, modulus], work) ?? null);
-    const [s, c, d] = values;
+    // A longer series starts from the values of the shorter one.
+    const [s, c, d] = known ? known.map((list) => list[0]) : valuesAt(centre, modulus, kSquared, work);
     known = s && c && d ? recurrence([s, c, d], kSquared, length, work) : null;
     if (cache.size >= CACHE_SIZE) cache.clear();
     cache.set(key, known);

@@ -268,6 +268,8 @@ export function byDifference<T>(segment: Segment, sum: Expression, n: Numbers<T>
     // The rest is of f and its own sum again.
     return { ...near, rest: near.rest && { ...near.rest, expansion: segment.expansion, sum }, steps: (show) => ['f and the sum are divided by the prefactor.', ...near.steps(show)] };
   }
+  const grown = problem.measure === 'absolute' ? growsWithPrefactor(segment, n, variable, check) : null;
+  if (grown !== null) return { kind: 'unbounded', place: grown, steps: ['f and the sum share a prefactor that grows faster than every power; what multiplies it in f - sum has a leading power that is not zero.'] };
   if (segment.expansion.oscillating && problem.measure === 'absolute') return byWaves(segment, sum, n, variable, lower, check);
   const hopeless = new Set<number>();
   for (let cut = 0; cut < MOST_DIFFERENCE_CUTS; cut += 1) {
@@ -308,6 +310,30 @@ export function byDifference<T>(segment: Segment, sum: Expression, n: Numbers<T>
       if (!r.isPositive(r.subtract(result.upper, limit)) || cut === MOST_DIFFERENCE_CUTS - 1) return done(result.upper, result.lower);
       break;
     }
+  }
+  return null;
+}
+
+/**
+ * The infinite end of a segment, where f - sum is proved to be unbounded there: (f - sum)/P = c s^v (1 + o(1)) with c not zero, and 1/P enclosed as C s^w with w > v, P the prefactor. Null where that is not proved.
+ */
+function growsWithPrefactor<T>(segment: Segment, n: Numbers<T>, variable: string, check: () => void): Expression | null {
+  const { prefactor } = segment.expansion;
+  const end = segment.upper === null ? build.constant('infinity') : segment.lower === null ? build.negation(build.constant('infinity')) : null;
+  if (prefactor === null || end === null) return null;
+  const scaled = inPrefactor(segment.expansion, prefactor);
+  const base = denominatorOf(scaled);
+  if (base === null) return null;
+  // Any part next to infinity will do.
+  const { near } = cutSegment({ ...segment, expansion: scaled }, 4);
+  for (const q of [base, 2 * base]) {
+    const local = localModel(near, n, variable, 20, q, check);
+    const rest = local && remainderAtPoint(local, scaled, n);
+    const inverse = rest && logModelOf(build.quotient(build.number(1), prefactor), n, local.m, variable, local.leaf, undefined, check);
+    const [difference, decay] = [rest?.[0], inverse?.[0]];
+    if (rest?.length !== 1 || inverse?.length !== 1 || !difference || !decay) continue;
+    const lead = difference.coefficients[0];
+    if (lead !== undefined && !n.r.containsZero(lead) && decay.valuation > difference.valuation) return end;
   }
   return null;
 }

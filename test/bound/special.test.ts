@@ -89,3 +89,14 @@ test('a free scale becomes a factor', () => {
   expect(bound.value.value?.startsWith('6.21120')).toBe(true);
   expect(bound.value.factor).toEqual(build.symbol('c'));
 });
+
+describe('where a growing prefactor multiplies what the sum leaves out', () => {
+  test.each(['expIntegralEi(x)', 'erfi(x)', 'besselI(0,x)'])('%s has no bound at infinity, and that is said (DLMF 6.12.2, 7.12.1, 10.40.1)', (text) => {
+    const expanded = expand({ function: exact(text), variable: x, point: 'inf', side: 'both', terms: 3, assumptions: [] }, budget(20_000));
+    if (!expanded.ok) throw new Error(expanded.error.message);
+    const interval = { lower: build.number(5), upper: build.constant('infinity') };
+    const bound = boundRemainder({ expansion: expanded.value, interval, measure: 'absolute', assumptions: [], budget: budget(20_000) });
+    expect(bound.ok && bound.value.value).toBeNull();
+    expect(bound.ok && bound.value.place).toEqual(build.constant('infinity'));
+  });
+});

@@ -93,7 +93,7 @@ export async function fix(document: vscode.TextDocument, range: vscode.Range, ti
 export const wait = (ms: number): Promise<void> => new Promise((resolve) => setTimeout(resolve, ms));
 
 /** What the loop below takes on the machine that the aims were set on. */
-const USUAL_LOOP_MS = 60;
+const USUAL_LOOP_MS = 120;
 /** How many times slower than usual this machine is now, at least 1: the processor's share in a fixed loop and the way through the event loop. */
 export async function slowness(): Promise<number> {
   const began = performance.now();

@@ -1,7 +1,7 @@
 /** Integrals over the half line that expand with logarithms: residues of Mellin transforms, and Watson's lemma with logarithms at the end. */
 import { describe, expect, it } from 'vitest';
 import { expansionText } from '../../src/write/index.ts';
-import { expansionOf, latex, outcomeOf } from './tools.ts';
+import { expansionOf, latex, outcomeOf, positive } from './tools.ts';
 
 const textOf = (formula: string, at: string, terms = 4): string => expansionText(expansionOf(formula, { at, side: at === '0' ? 'right' : 'both', terms }));
 
@@ -52,5 +52,22 @@ describe('logarithms at the end that matters', () => {
     ['\\int_0^1 e^{-x t^2}\\ln(t)\\cos t\\,dt', '−√π·ln(x)/(4√x) − √π·(γ + 2ln(2))/(4√x) + √π·ln(x)/(16x^(3/2)) + √π·(γ + 2ln(2) − 2)/(16x^(3/2)) + O(ln(x)/x^(5/2))'],
   ])('%s', (formula, expected) => {
     expect(textOf(formula, 'inf')).toBe(expected);
+  });
+});
+
+describe('smoothed steps: degenerate electrons at low temperature', () => {
+  it.each([
+    // Sommerfeld's expansion: Ashcroft & Mermin, Solid State Physics, eq. (2.70) and appendix C (from memory); Fermi-Dirac integrals: DLMF 25.12(iii).
+    ['\\int_0^\\infty \\frac{\\sqrt{t}}{e^{(t-\\mu)/T}+1}\\,dt', '2μ^(3/2)/3 + π²T²/(12√μ) + 7π⁴T⁴/(960μ^(5/2)) + 31π⁶T⁶/(4608μ^(9/2)) + O(T⁸)'],
+    ['\\int_0^\\infty \\frac{t^2}{e^{(t-\\mu)/T}+1}\\,dt', 'μ³/3 + π²μT²/3 + O(T³)'],
+    // By parts three times the row before.
+    ['\\int_0^\\infty \\frac{t^3 e^{(t-\\mu)/T}}{T(e^{(t-\\mu)/T}+1)^2}\\,dt', 'μ³ + π²μT² + O(T³)'],
+    // T log(1 + e^(1/T)).
+    ['\\int_0^\\infty \\frac{dt}{e^{(t-1)/T}+1}', '1 + O(T)'],
+  ])('%s', (formula, expected) => {
+    expect(expansionText(expansionOf(formula, { variable: 'T', side: 'right', assumptions: positive('\\mu') }))).toBe(expected);
+  });
+  it.each([['\\int_0^\\infty \\frac{\\sqrt{t}}{e^{(t-1)/T}-1}\\,dt'], ['\\int_0^\\infty \\frac{e^{t^2}}{e^{(t-1)/T}+1}\\,dt'], ['\\int_0^\\infty \\frac{1}{t(e^{(t-1)/T}+1)}\\,dt']])('%s has no value', (formula) => {
+    expect(outcomeOf(latex(formula), { variable: 'T', side: 'right' }).ok).toBe(false);
   });
 });

@@ -6,6 +6,7 @@ import { add, type Context, eventualSign, exactOf, growth, integrate, isKnownZer
 import { openSide } from '../open-side.ts';
 import { type Evaluate, bind, type Session } from '../session.ts';
 import { completeIntegral, SHIFT } from './complete.ts';
+import { bySmoothStep } from './edge.ts';
 import { byMellin } from './mellin.ts';
 import { byMoments } from './moments.ts';
 import { regularOn } from './monotone.ts';
@@ -123,7 +124,7 @@ function byParameter(s: Session, e: IntegralNode, name: string, lower: Expressio
   return byMoments(s, e.body, name, from, to, evaluate);
 }
 
-/** The integrand as the methods for regular, decaying and summable ones take it; where none of them serves, by Mellin transforms over (0, inf) or by stationary phase. */
+/** The integrand as the methods for regular, decaying and summable ones take it; where none of them serves, by Mellin transforms over (0, inf), about a smooth step, or by stationary phase. */
 function parametric(s: Session, e: IntegralNode, name: string, lower: Expression, upper: Expression, evaluate: Evaluate): Multi {
   try {
     return byParameter(s, e, name, lower, upper, evaluate);
@@ -143,6 +144,8 @@ function otherwise(s: Session, e: IntegralNode, name: string, lower: Expression,
     const found = orNull(() => byMellin(s, e.body, name, c.local, evaluate));
     if (found !== null) return found;
   }
+  const step = low && high === null ? orNull(() => bySmoothStep(s, e.body, name, low, evaluate)) : null;
+  if (step !== null) return step;
   return orNull(() => byStationaryPhase(s, e.body, name, low, high, evaluate));
 }
 

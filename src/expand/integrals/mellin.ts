@@ -4,13 +4,14 @@
  * Both transforms are needed in closed form, and a line on which both converge. Source: Wong, Asymptotic Approximations of Integrals, ch. 3; Bleistein & Handelsman ch. 4 (from memory).
  */
 import type { Element } from '../../algebra/types.ts';
-import { build, children, dependsOn, type Expression, Q, substitute } from '../../expression/index.ts';
+import { build, children, dependsOn, type Expression, Q } from '../../expression/index.ts';
 import { differentiate } from '../../functions/index.ts';
 import { Declined } from '../../outcome.ts';
 import { add, beyondAllOrders, type Context, isOscillating, isZero, logarithm, monomialOf, type Multi, multiply, oscillatingParts, power, reciprocal, scaleBy, Series, signOfExponent, sumOfSeries } from '../../series/index.ts';
 import { openSide } from '../open-side.ts';
 import type { Evaluate, Session } from '../session.ts';
 import { completeIntegral, SHIFT } from './complete.ts';
+import { diverges, type End, isPower, logarithmPower } from './growth-orders.ts';
 import { homogeneous } from './homogeneous.ts';
 import { type Range, signOn } from './monotone.ts';
 
@@ -85,8 +86,6 @@ export function byMellin(s: Session, body: Expression, v: string, x: string, eva
   return multiply(c, front, ends ? multiply(c, sum, add(c, Q.ONE, beyondAllOrders(c, large))) : sum);
 }
 
-type End = 'zero' | 'infinity';
-
 interface Factors {
   readonly outside: Expression[];
   readonly fixed: Expression[];
@@ -113,22 +112,6 @@ function sort(e: Expression, v: string, moves: (e: Expression) => boolean, posit
         (!dependsOn(t, v) ? into.outside : moves(t) ? into.mixed : into.fixed).push(single);
       }
     } else (moves(e) ? into.mixed : into.fixed).push(put(e));
-  }
-}
-
-function isPower(e: Expression, v: string): boolean {
-  if (!dependsOn(e, v)) return true;
-  switch (e.kind) {
-    case 'symbol':
-      return true;
-    case 'product':
-      return e.factors.every((f) => isPower(f, v));
-    case 'quotient':
-      return isPower(e.numerator, v) && isPower(e.denominator, v);
-    case 'power':
-      return !dependsOn(e.exponent, v) && isPower(e.base, v);
-    default:
-      return false;
   }
 }
 
@@ -267,13 +250,6 @@ function continued(field: Context['field'], power_: Expression, factors: readonl
   return total;
 }
 
-/** n for log(v)^n, 0 for others. */
-function logarithmPower(e: Expression, v: string): number {
-  if (e.kind === 'call') return e.function === 'log' && e.args[0]?.kind === 'symbol' && e.args[0].name === v ? 1 : 0;
-  if (e.kind !== 'power' || e.exponent.kind !== 'number' || !Q.isInteger(e.exponent.value) || e.exponent.value.num <= 0n || e.exponent.value.num > 8n) return 0;
-  return logarithmPower(e.base, v) * Number(e.exponent.value.num);
-}
-
 /** Leading exponents of t at both ends: null where smaller than every power; a wave at infinity counts as one power less, because its integrals converge that far. */
 interface Ends {
   readonly zero: Element | null;
@@ -302,43 +278,3 @@ function meet(f: Ends, h: Ends, field: Context['field']): boolean {
   const upper = [h.infinity && field.negate(h.infinity), f.zero && field.add(f.zero, Q.ONE)];
   return lower.every((a) => upper.every((b) => a === null || b === null || field.compare(b, a) === 1));
 }
-
-/**
- * Whether the coefficients outgrow every power: by Stirling's formula moments of exp(-t^m) grow as Gamma(k/m), the coefficients of exp(-t^m), sin(t^m), cos(t^m) shrink so, and those of functions with singularities elsewhere do neither.
- */
-function diverges(field: Context['field'], f: Expression, h: Expression, v: string, near: End): boolean {
-  const far: End = near === 'zero' ? 'infinity' : 'zero';
-  const [ofF, ofH] = [growthOrders(field, f, v), growthOrders(field, h, v)];
-  return ofF.moments(far) > ofH.coefficients(near) || ofH.moments(near) > ofF.coefficients(far);
-}
-
-interface GrowthOrders {
-  /** Of the moments of high order that the behaviour at that end decides. */
-  readonly moments: (end: End) => number;
-  /** How fast the coefficients at that end shrink. */
-  readonly coefficients: (end: End) => number;
-}
-
-function growthOrders(field: Context['field'], e: Expression, v: string): GrowthOrders {
-  const degrees: number[] = [];
-  let entire = true;
-  for (const f of e.kind === 'product' ? e.factors : [e]) {
-    const inner = f.kind === 'power' && f.base.kind === 'constant' ? f.exponent : f.kind === 'call' && ['exp', 'sin', 'cos'].includes(f.function) ? f.args[0] : undefined;
-    if (!inner || !isPowerOf(inner, v)) {
-      if (!isPower(f, v) && logarithmPower(f, v) === 0) entire = false;
-      continue;
-    }
-    const unsigned = substitute(build.call('log', inner), v, build.power(build.constant('e'), build.symbol(v)));
-    const slope = differentiate(unsigned, v);
-    const degree = slope && field.asRational(field.fromExpression(slope));
-    if (degree) degrees.push(Number(degree.num) / Number(degree.den));
-    else entire = false;
-  }
-  const largest = (sign: 1 | -1): number => Math.max(0, ...degrees.map((d) => (d * sign > 0 ? 1 / Math.abs(d) : 0)));
-  return {
-    moments: (end) => largest(end === 'infinity' ? 1 : -1),
-    coefficients: (end) => (entire ? largest(end === 'zero' ? 1 : -1) : 0),
-  };
-}
-
-const isPowerOf = (e: Expression, v: string): boolean => (e.kind === 'negation' ? isPowerOf(e.operand, v) : isPower(e, v));

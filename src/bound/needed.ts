@@ -267,7 +267,11 @@ function noNumber(problem: NeededProblem, expansionOf: (n: number) => Expansion,
       ? 'The series diverges; for more terms nothing is proved.'
       : convergence === 'beyond'
         ? `The interval reaches beyond the radius of convergence${radius ? ` (nearest singularity at distance ${shown(radius)})` : ''}; for more terms nothing is proved.`
-        : 'The radius of convergence is not known; for more terms nothing is proved.';
+        : convergence === 'inside'
+          ? 'The interval lies within the radius of convergence; for more terms than were tried nothing is proved.'
+          : expansion.radius === undefined
+            ? 'Whether the series converges on the interval was not examined; for more terms nothing is proved.'
+            : 'The radius of convergence is not known; for more terms nothing is proved.';
   const reach = reachOf(problem, expansionOf, expansion, tolerance, best.terms, convergence);
   const reachAnswer = reach ? { reach } : {};
   if (best.bound.value === null) return { terms: null, reason: isSingularForEverySum(expansion, best.bound, problem.measure) ? SINGULAR : `${shownSoFar} ${more}`, ...reachAnswer };

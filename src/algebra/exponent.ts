@@ -52,7 +52,6 @@ export function compareExponents(a: Exponent, b: Exponent): number {
   if (typeof a === 'number' && typeof b === 'number') return a - b;
   return numeratorOf(a) * denominatorOf(b) - numeratorOf(b) * denominatorOf(a);
 }
-export const sameExponent = (a: Exponent, b: Exponent): boolean => a === b || (typeof a === 'object' && typeof b === 'object' && a.p === b.p && a.q === b.q);
 
 /** The largest whole multiple of `period` not above e, as a count of periods. */
 export const periodsIn = (e: Exponent, period: number): number => Math.floor(numeratorOf(e) / (denominatorOf(e) * period));

@@ -50,7 +50,6 @@ export const containsZero = (x: Ball): boolean => magnitude(x.mid) <= x.rad;
 export const isPositive = (x: Ball): boolean => x.mid > x.rad;
 export const isNegative = (x: Ball): boolean => -x.mid > x.rad;
 export const isNonNegative = (x: Ball): boolean => x.mid >= x.rad;
-export const isNonPositive = (x: Ball): boolean => -x.mid >= x.rad;
 /** Every number of `inner` lies in `outer`. */
 export const containsBall = (outer: Ball, inner: Ball): boolean =>
   compareExact(lowerEnd(outer), lowerEnd(inner)) <= 0 && compareExact(upperEnd(inner), upperEnd(outer)) <= 0;

@@ -54,7 +54,7 @@ export function sineCosine(x: bigint, bits: number): readonly [bigint, bigint] {
 }
 
 /** atanh(p/q) = p/q + (p/q)^3/3 + ... for |p/q| <= 1/2 in fixed point; atan where `alternating`. Error below (number of terms + 3) ulp, at most bits + 5. */
-export function inverseTangentSeries(p: bigint, q: bigint, bits: number, alternating: boolean): bigint {
+function inverseTangentSeries(p: bigint, q: bigint, bits: number, alternating: boolean): bigint {
   const w = BigInt(bits);
   const x = divideFloor(p << w, q);
   const square = (x * x) >> w;
@@ -69,7 +69,7 @@ export function inverseTangentSeries(p: bigint, q: bigint, bits: number, alterna
 }
 
 /** atanh(1/n) (or atan(1/n)) for an integer n >= 2 by whole divisions. Error below 2 * (number of terms) + 2 ulp, at most 2 * bits + 4. */
-export function inverseTangentOfReciprocal(n: bigint, bits: number, alternating: boolean): bigint {
+function inverseTangentOfReciprocal(n: bigint, bits: number, alternating: boolean): bigint {
   const square = n * n;
   let power = (1n << BigInt(bits)) / n;
   let sum = 0n;

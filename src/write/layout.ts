@@ -22,7 +22,7 @@ export function multiplyFactors(a: Factors, b: Factors): Factors {
   };
 }
 
-export function invertFactors(a: Factors): Factors | null {
+function invertFactors(a: Factors): Factors | null {
   if (Q.isZero(a.coefficient)) return null;
   return { negative: a.negative, coefficient: Q.reciprocal(a.coefficient), numerator: a.denominator, denominator: a.numerator };
 }

@@ -1,12 +1,11 @@
 /** Expression -> a Python expression in the names of the mpmath library, for numeric checks. */
-import { Q, type ConstantName, type Expression } from '../expression/index.ts';
+import { type Expression, Q } from '../expression/index.ts';
+import { ASCII, asciiPower } from './ascii.ts';
 import { toLatex } from './latex.ts';
-import { atom, Binding, enclosed, type Dialect, type Piece, writeLinear } from './linear.ts';
+import { atom, Binding, type Dialect, enclosed, type Piece, writeLinear } from './linear.ts';
 import { describe } from './names.ts';
 import { RESERVED_NUMERIC } from './reserved.ts';
 import { identifierOf } from './symbols.ts';
-
-const CONSTANTS: Readonly<Record<ConstantName, string>> = { pi: 'pi', e: 'exp(1)', i: 'I', eulerGamma: 'euler', catalan: 'catalan', glaisher: 'glaisher', infinity: 'inf' };
 
 /** One-to-one names for symbols: each asked symbol gets one identifier that is no name of mpmath, no keyword, and no other symbol's. */
 export class NumericSymbols {
@@ -39,14 +38,9 @@ export function toMpmath(expression: Expression, symbols: NumericSymbols = new N
 
 function dialect(symbols: NumericSymbols): Dialect {
   return {
-    minus: '-',
-    times: '*',
-    spaceAroundSum: true,
-    dividesLast: true,
-    number: (value) => (value.den === 1n ? atom(`${value.num}`) : { text: `${value.num}/${value.den}`, binding: Binding.Product }),
-    constant: (name) => atom(CONSTANTS[name]),
+    ...ASCII,
     symbol: (name) => atom(symbols.nameOf(name)),
-    power,
+    power: asciiPower('**'),
     root,
     call: (id, args, write) => {
       const texts = args.map((a) => write(a).text);
@@ -56,12 +50,6 @@ function dialect(symbols: NumericSymbols): Dialect {
     },
     other,
   };
-
-  function power(base: Expression, exponent: Expression, write: (e: Expression) => Piece): Piece {
-    if (base.kind === 'constant' && base.name === 'e') return atom(`exp(${write(exponent).text})`);
-    if (exponent.kind === 'number' && Q.equal(exponent.value, Q.HALF)) return atom(`sqrt(${write(base).text})`);
-    return { text: `${enclosed(write(base), Binding.Atom)}**${enclosed(write(exponent), Binding.Atom)}`, binding: Binding.Power };
-  }
 
   /** The real root of odd degree: mpmath's own root is the principal one, which is complex for a negative radicand. */
   function root(degree: Expression, radicand: Expression, write: (e: Expression) => Piece): Piece {

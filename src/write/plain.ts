@@ -1,8 +1,7 @@
 /** Expression -> the exact strings of the protocol: plain notation that the plain reader reads back to the same value. */
-import { Q, type ConstantName, type Expression } from '../expression/index.ts';
-import { atom, Binding, enclosed, LINEAR_RELATIONS, type Dialect, type Piece, writeLinear } from './linear.ts';
-
-const CONSTANTS: Readonly<Record<ConstantName, string>> = { pi: 'pi', e: 'exp(1)', i: 'I', eulerGamma: 'euler', catalan: 'catalan', glaisher: 'glaisher', infinity: 'inf' };
+import type { Expression } from '../expression/index.ts';
+import { ASCII, asciiPower } from './ascii.ts';
+import { atom, Binding, type Dialect, enclosed, LINEAR_RELATIONS, type Piece, writeLinear } from './linear.ts';
 
 /** `-17/45`, `sqrt(2)/2`, `a^(3/2)`, `log(2)`, `I*pi/2`. Total; cost linear in the text. */
 export function toPlain(expression: Expression): string {
@@ -12,18 +11,9 @@ export function toPlain(expression: Expression): string {
 const list = (args: readonly Expression[], write: (e: Expression) => Piece): string => args.map((a) => write(a).text).join(', ');
 
 const PLAIN: Dialect = {
-  minus: '-',
-  times: '*',
-  spaceAroundSum: true,
-  dividesLast: true,
-  number: (value) => (value.den === 1n ? atom(`${value.num}`) : { text: `${value.num}/${value.den}`, binding: Binding.Product }),
-  constant: (name) => atom(CONSTANTS[name]),
+  ...ASCII,
   symbol: (name) => atom(plainSymbol(name)),
-  power(base, exponent, write) {
-    if (base.kind === 'constant' && base.name === 'e') return atom(`exp(${write(exponent).text})`);
-    if (exponent.kind === 'number' && Q.equal(exponent.value, Q.HALF)) return atom(`sqrt(${write(base).text})`);
-    return { text: `${enclosed(write(base), Binding.Atom)}^${enclosed(write(exponent), Binding.Atom)}`, binding: Binding.Power };
-  },
+  power: asciiPower('^'),
   root: (degree, radicand, write) =>
     degree.kind === 'number' && degree.value.num === 3n ? atom(`cbrt(${write(radicand).text})`) : atom(`root(${write(radicand).text}, ${write(degree).text})`),
   call: (id, args, write) => atom(`${id}(${list(args, write)})`),

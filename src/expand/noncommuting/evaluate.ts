@@ -32,6 +32,7 @@ const ADJOINTS = new Set(['\\dagger', '\\ast', '*', '\\top', 'T', 'H', '\\interc
 /** Functions that are not given by a power series at a point of their domain, or not meant of an operator. */
 const NOT_ANALYTIC = /^(?:abs|sign|floor|ceil|round|real|imag|re|im|conjugate|arg|max|min|factorial|doubleFactorial)/;
 
+/** The series of a formula in s, coefficients sums of words; declines what has no expansion in words. Cost: that of the products of series, each quadratic in the number of words. */
 export function evaluateOperators(v: Evaluation, e: Expression): OperatorSeries {
   v.budget.check();
   if (!holdsOperator(v, e)) return scalarSeries(v, e);
@@ -39,11 +40,9 @@ export function evaluateOperators(v: Evaluation, e: Expression): OperatorSeries 
     case 'symbol':
       return letter(v, e.name);
     case 'sum':
-      return e.terms.map((t) => evaluateOperators(v, t)).reduce((a, b) => addSeries(v, a, b));
     case 'product':
-      return e.factors.map((t) => evaluateOperators(v, t)).reduce((a, b) => multiplySeries(v, a, b));
     case 'negation':
-      return scaleSeries(v, evaluateOperators(v, e.operand), Q.rational(-1));
+      return combined(v, e, evaluateOperators);
     case 'quotient':
       return quotient(v, e);
     case 'power':
@@ -57,6 +56,18 @@ export function evaluateOperators(v: Evaluation, e: Expression): OperatorSeries 
       return special(v, e);
     default:
       throw new Declined('no-expansion', 'This kind of formula is not expanded in operators; write it with sums, products, powers and functions of one operator.');
+  }
+}
+
+/** Sums, products in their order, and negations of what `part` evaluates. */
+function combined(v: Evaluation, e: Extract<Expression, { kind: 'sum' | 'product' | 'negation' }>, part: (v: Evaluation, e: Expression) => OperatorSeries): OperatorSeries {
+  switch (e.kind) {
+    case 'sum':
+      return e.terms.map((t) => part(v, t)).reduce((a, b) => addSeries(v, a, b));
+    case 'product':
+      return e.factors.map((t) => part(v, t)).reduce((a, b) => multiplySeries(v, a, b));
+    case 'negation':
+      return scaleSeries(v, part(v, e.operand), Q.rational(-1));
   }
 }
 
@@ -85,11 +96,9 @@ function scalarSeries(v: Evaluation, e: Expression): OperatorSeries {
       return constantSeries(e.name === STEP ? one(Q.ONE) : sumOf(v, v.field.fromExpression(e)), v.weights.get(e.name) ?? 0);
     }
     case 'sum':
-      return e.terms.map((t) => scalarSeries(v, t)).reduce((a, b) => addSeries(v, a, b));
     case 'product':
-      return e.factors.map((t) => scalarSeries(v, t)).reduce((a, b) => multiplySeries(v, a, b));
     case 'negation':
-      return scaleSeries(v, scalarSeries(v, e.operand), Q.rational(-1));
+      return combined(v, e, scalarSeries);
     case 'quotient':
       return multiplySeries(v, scalarSeries(v, e.numerator), invert(v, scalarSeries(v, e.denominator)));
     case 'power':
@@ -152,7 +161,7 @@ function power(v: Evaluation, e: Extract<Expression, { kind: 'power' }>): Operat
   return analytic(v, base, (t) => build.power(t, exponent));
 }
 
-/** Cost: |n| products, at most as many as the series is wide matter for large n; refused above 1000. */
+/** Cost: |n| products; refused above 1000. */
 function integerPower(v: Evaluation, base: OperatorSeries, n: bigint): OperatorSeries {
   if (n < 0n) return integerPower(v, invert(v, base), -n);
   if (n > 1000n) throw new Declined('bad-request', 'This power of an operator is too high to be written in words; choose an exponent below 1000.');
@@ -235,8 +244,8 @@ function determinantOf(v: Evaluation, a: OperatorSeries): OperatorSeries {
   const unit = only.coefficient;
   if (lead.size !== 1 || v.field.isZero(v.field.subtract(unit, Q.ONE)) !== 'yes' || a.start !== 0) throw new Declined('needs-assumption', 'The determinant of a multiple of an operator depends on the dimension; take the factor out of the determinant.');
   const inverse = inverseOf(v.field, lead);
-  const one1 = inverse && only.word.length > 0 ? multiplySeries(v, constantSeries(inverse), a) : a;
-  const logarithm = analytic(v, one1, (t) => build.call('log', t));
+  const normalised = inverse && only.word.length > 0 ? multiplySeries(v, constantSeries(inverse), a) : a;
+  const logarithm = analytic(v, normalised, (t) => build.call('log', t));
   const value = analytic(v, traceOf(v, logarithm), (t) => build.power(build.constant('e'), t));
   const front = only.word.reduce<Element>((product, x) => {
     const name = v.letters[Math.abs(x) - 1] ?? '';

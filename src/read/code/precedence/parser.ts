@@ -1,5 +1,5 @@
 /** Expressions by operator precedence. Every loop moves forward, nesting is capped, and nothing throws: what cannot be read is opaque. */
-import { type CodeLanguage } from '../languages/index.ts';
+import type { CodeLanguage } from '../languages/index.ts';
 import type { Code, ParameterCode } from '../syntax.ts';
 import { binaryLevel, isPower, LEVEL, notLevel, signLevel } from './levels.ts';
 import type { Token } from './tokens.ts';
@@ -353,7 +353,7 @@ export class Parser {
       return { kind: 'lambda', parameters, body, start: token.start, end: body.end };
     }
     this.next();
-    if (this.language.juxtaposition && this.is('->') ) {
+    if (this.language.juxtaposition && this.is('->')) {
       this.next();
       const body = this.expression();
       return { kind: 'lambda', parameters: [{ name: token.text, type: '', start: token.start, end: token.end }], body, start: token.start, end: body.end };
@@ -423,8 +423,7 @@ export class Parser {
     const items = this.list();
     const [only] = items;
     if (square || !only || items.length !== 1 || only.kind === 'named') return { kind: 'list', items, start: token.start, end: this.lastEnd };
-    const whole: Code = { kind: 'group', inner: only, start: token.start, end: this.lastEnd };
-    return whole;
+    return { kind: 'group', inner: only, start: token.start, end: this.lastEnd };
   }
 
   /** `(float)x` in languages of the C kind. */
@@ -473,7 +472,7 @@ export class Parser {
   list(): readonly Code[] {
     const open = this.next();
     const close = CLOSERS[open.text] ?? ')';
-    if (this.#depth >= MAX_NESTING) return [this.#skipTo(open, close)];
+    if (this.#depth >= MAX_NESTING) return [this.#skipTo(open)];
     this.#depth += 1;
     const spaces = open.text === '[' && this.language.family === 'matlab';
     const [colons, entries] = [this.#colonEnds, this.#entries];
@@ -552,10 +551,10 @@ export class Parser {
       return { kind: 'opaque', what: 'expression nested too deeply', parts: [], start: token.start, end: Math.max(token.start, this.lastEnd) };
     }
     this.next();
-    return this.#skipTo(token, CLOSERS[token.text] ?? ')');
+    return this.#skipTo(token);
   }
 
-  #skipTo(open: Token, _close: string): Code {
+  #skipTo(open: Token): Code {
     let depth = 1;
     for (;;) {
       const token = this.peek();

@@ -485,8 +485,7 @@ class StatementReader {
       return null;
     }
     p.next();
-    const declared = this.#declared(token, /parameter/i.test(type) ? `const ${type}` : type, first);
-    return declared;
+    return this.#declared(token, /parameter/i.test(type) ? `const ${type}` : type, first);
   }
 
   #lineHas(text: string): boolean {

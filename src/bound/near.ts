@@ -183,10 +183,11 @@ function describeLocal<T>(local: Local<T>, order: number, upper: T, tail: T, n: 
 function firstOmitted<T>(rest: LogModel<T>, local: Local<T>, cut: number, segment: Segment, n: Numbers<T>, problem: SharpProblem, variable: string): T | null {
   const { r } = n;
   const present = rest.filter((g) => g.coefficients.length > 0);
+  if (present.length === 0) return null;
   const least = Math.min(...present.map((g) => g.valuation));
   const power = r.powerRational(r.fromInteger(2), Q.rational(cut * least, local.denominator));
   const far = r.log(r.fromInteger(2));
-  if (present.length === 0 || power === null || far === null) return null;
+  if (power === null || far === null) return null;
   const logarithm = r.divideInteger(r.multiply(r.fromInteger(cut), far), local.denominator);
   let sum = r.zero;
   for (const [j, g] of rest.entries()) {

@@ -93,7 +93,7 @@ describe('intervals that a sum cannot serve', () => {
 });
 
 const needed = (f: string, point: string, lower: string, upper: string): NeededProblem => ({
-  expansionWithTerms: (terms) => expand({ function: exact(f), variable: x, point: exact(point), side: 'both', terms, assumptions: [] }, budget(5000)),
+  expansionWithTerms: (terms) => expand({ function: exact(f), variable: x, point: exact(point), side: 'both', terms, assumptions: [], radius: true }, budget(5000)),
   interval: interval(lower, upper),
   measure: 'absolute',
   assumptions: [],

@@ -57,8 +57,10 @@ async function stage(name, command, args, options) {
 const report = join(ROOT, '.cache', 'vitest.json');
 const fromVitest = () => {
   try {
-    const { numPassedTests, numFailedTests, numFailedTestSuites } = JSON.parse(readFileSync(report, 'utf8'));
-    return { passed: numPassedTests, failed: Math.max(numFailedTests, numFailedTestSuites) };
+    const { numPassedTests, numFailedTests, testResults } = JSON.parse(readFileSync(report, 'utf8'));
+    // A file that could not be loaded has no test that failed.
+    const broken = testResults.filter((file) => file.status === 'failed' && file.assertionResults.every((test) => test.status !== 'failed')).length;
+    return { passed: numPassedTests, failed: numFailedTests + broken };
   } catch {
     return null;
   }

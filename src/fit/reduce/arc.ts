@@ -1,13 +1,13 @@
 /** A asin(x) and A acos(x) up to |x| = 1: asin x = pi/2 - 2 asin s and acos x = 2 asin s with s = sqrt((1 - x)/2) (DLMF 4.24.1 with 4.21.10, half-angle form). */
 import { build, type Expression, Q, type Rational } from '../../expression/index.ts';
-import { type Budget, Declined } from '../../outcome.ts';
+import { attempt, type Budget, Declined } from '../../outcome.ts';
 import { type Interval, interval, real } from '../../rigorous/index.ts';
 import type { Statement } from '../../write/index.ts';
 import { powerOfTwo } from '../format.ts';
 import type { Program } from '../program.ts';
 import { twoWords, type TwoWords } from './arctangent.ts';
 import { assembledError, piecesOf } from './assembled.ts';
-import { absoluteOf, allowedOff, arithmeticOf, choice, fitKernel, greater, inParts, kernelStatements, lastRounded, lesser, let_, REDUCED, type Reduced, type ReductionProblem, relation, requireSolid, tooSmall, toleranceFor } from './kernel.ts';
+import { absoluteOf, allowedOff, arithmeticOf, choice, fitKernel, greater, inParts, type Kernel, kernelStatements, lastRounded, lesser, let_, REDUCED, type Reduced, type ReductionProblem, relation, requireSolid, tooSmall, toleranceFor } from './kernel.ts';
 import { halfUlp, roundedUp } from './parts.ts';
 import { constantBall } from './recognise.ts';
 
@@ -69,9 +69,10 @@ export function reduceArc(problem: ReductionProblem, of: 'asin' | 'acos', factor
   const doubled = of === 'acos' && measure === 'absolute' ? Q.rational(2) : Q.ONE;
   const totalOf = (kernelError: Rational): Rational => ranges.reduce((worst, r) => greater(worst, roundOff(r, absoluteOf(kernelError, measure, largest, format))), direct ? Q.multiply(doubled, kernelError) : Q.ZERO);
   const goal = whole.tolerance && allowedOff(totalOf, whole.tolerance, greater(whole.tolerance, toleranceFor(Q.multiply(whole.tolerance, largest), measure, largest, format)));
-  // Where the bound that is the same everywhere leaves nothing, the one by pieces may still do.
-  const sought = goal && whole.tolerance && Q.isZero(goal) ? Q.divide(whole.tolerance, Q.rational(3)) : goal;
-  const kernel = fitKernel(problem, { function: f, low: MINUS_HALF, high: Q.HALF, measure, ...(of === 'acos' ? { inherited: moved } : {}), ...(sought ? { tolerance: sought } : {}) }, budget);
+  const within = (sought: Rational | undefined): Kernel => fitKernel(problem, { function: f, low: MINUS_HALF, high: Q.HALF, measure, ...(of === 'acos' ? { inherited: moved } : {}), ...(sought ? { tolerance: sought } : {}) }, budget);
+  const everywhere = goal && !Q.isZero(goal) ? attempt(() => within(goal)) : null;
+  // Where the bound that is the same everywhere leaves nothing, or less than the polynomial itself can keep, the one by pieces may still do.
+  const kernel = everywhere?.ok ? everywhere.value : within(whole.tolerance && Q.divide(whole.tolerance, Q.rational(3)));
   requireSolid(kernel, largest, format);
   const { error, certified, program } = kernel.found;
   const sharp = (r: Range): Rational => {

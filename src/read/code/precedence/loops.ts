@@ -1,17 +1,11 @@
 /** Loops of the languages that are read by operator precedence. What is not followed stays opaque, so that nothing in it is taken for straight-line code. */
 import type { CodeLanguage } from '../languages/index.ts';
 import type { Code, LoopHead } from '../syntax.ts';
+import { isCKind } from './families.ts';
+import { readOperand } from './operands.ts';
 import type { Parser } from './parser.ts';
+import type { StatementSource } from './source.ts';
 import type { Token } from './tokens.ts';
-
-/** What the reader of statements lends. */
-export interface StatementSource {
-  readonly list: (stops: readonly string[]) => readonly Code[];
-  readonly arm: () => Code;
-  readonly simple: () => Code | null;
-  readonly declared: () => Code | null;
-  readonly skipLine: () => void;
-}
 
 const LOOPS: Readonly<Record<string, readonly string[]>> = {
   julia: ['for', 'while'],
@@ -24,11 +18,13 @@ const LOOPS: Readonly<Record<string, readonly string[]>> = {
 const C_LOOPS: readonly string[] = ['for', 'while', 'do'];
 
 export const opensLoop = (word: string, language: CodeLanguage): boolean => {
-  const words = Object.hasOwn(LOOPS, language.family) ? LOOPS[language.family] : ['glsl', 'hlsl', 'c', 'cpp', 'csharp', 'java'].includes(language.family) ? C_LOOPS : [];
+  const words = Object.hasOwn(LOOPS, language.family) ? LOOPS[language.family] : isCKind(language) ? C_LOOPS : [];
   return words?.includes(word) ?? false;
 };
 
-export function readLoop(p: Parser, word: string, token: Token, source: StatementSource): Code {
+/** The loop that `word` opens, at the current place. */
+export function readLoop(source: StatementSource, word: string, token: Token): Code {
+  const p = source.parser;
   const { family } = p.language;
   const keyword = p.next();
   const made = (head: LoopHead | null, parts: readonly Code[], body: Code): Code => ({ kind: 'opaque', what: `${keyword.text} loop`, parts: [...parts, body], ...(head ? { loop: { head, body } } : {}), start: token.start, end: Math.max(token.end, p.lastEnd) });
@@ -42,14 +38,14 @@ export function readLoop(p: Parser, word: string, token: Token, source: Statemen
     return { kind: 'block', body, start, end };
   };
   if (family === 'fortran') return fortranDo(p, source, endBlock, made);
-  const body = family === 'julia' || family === 'matlab' ? endBlock : source.arm;
+  const body = family === 'julia' || family === 'matlab' ? endBlock : () => source.arm();
   if (word === 'while') {
     const condition = p.expression();
     return made(null, [condition], body());
   }
   if (word === 'do' || word === 'repeat') {
     // Kotlin's `repeat(n) { ... }`.
-    const count = p.is('(') ? [p.primary()] : [];
+    const count = p.is('(') ? [readOperand(p)] : [];
     const inside = source.arm();
     p.skipNewlines();
     if (p.isWord('while')) {
@@ -58,7 +54,7 @@ export function readLoop(p: Parser, word: string, token: Token, source: Statemen
     }
     return made(null, count, inside);
   }
-  if (family === 'glsl' || family === 'hlsl' || family === 'c' || family === 'cpp' || family === 'csharp' || family === 'java') return stepLoop(p, source, made);
+  if (isCKind(p.language)) return stepLoop(p, source, made);
   const head = eachHead(p);
   return made(head, head ? [head.over] : [], body());
 }
@@ -92,7 +88,7 @@ type Made = (head: LoopHead | null, parts: readonly Code[], body: Code) => Code;
 /** `for (first; condition; step)`. */
 function stepLoop(p: Parser, source: StatementSource, made: Made): Code {
   if (!p.take('(')) return made(null, [], source.arm());
-  const first = source.declared();
+  const first = source.statement();
   p.take(';');
   const condition = p.is(';') ? null : p.expression();
   p.take(';');

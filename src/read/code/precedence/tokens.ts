@@ -15,6 +15,10 @@ const NAME = /[\p{L}\p{Nl}_$][\p{L}\p{Nl}\p{Nd}\p{No}\p{Mn}_$!′]*/uy;
 /** Longest first. */
 const OPERATORS = ['.**', '...', '..<', '<<-', '->>', '===', '!==', '>>>', '**', '.^', '.*', './', '.\\', '.+', '.-', ".'", '&&', '||', '==', '!=', '~=', '/=', '<=', '>=', '.<', '.>', '<-', '->', '=>', '::', '//', '?:', '?.', '??', '!!', '+=', '-=', '*=', '<<', '>>', '..', '++', '--', '%/%', '%%', '%*%', '%in%', ':='];
 
+/** Words of statements, which are never the name of an operand. */
+const NO_OPERAND: ReadonlySet<string> = new Set(['then', 'else', 'elseif', 'end', 'endif', 'do', 'return', 'elsif', 'in', 'to', 'otherwise']);
+export const isOperandName = (word: string): boolean => !NO_OPERAND.has(word);
+
 function numberPattern(language: CodeLanguage): RegExp {
   const whole = '\\d[\\d_]*';
   switch (language.family) {
@@ -230,7 +234,7 @@ function usable(operator: string, language: CodeLanguage): boolean {
   const dotted = family === 'julia' || family === 'matlab';
   if (/^\.[*/^\\+'<>-]/.test(operator) || operator === '.**') return dotted;
   if (operator === '~=') return family === 'matlab';
-  if (operator === '/=') return family === 'fortran' || family === 'c' || family === 'glsl' || family === 'hlsl' || family === 'kotlin' || family === 'swift' || family === 'julia' || family === 'cpp' || family === 'java' || family === 'csharp' || family === 'go' || family === 'rust' || family === 'javascript' || family === 'python';
+  if (operator === '/=') return family !== 'matlab' && family !== 'r';
   if (operator === '**') return family === 'fortran' || family === 'python' || family === 'javascript' || family === 'matlab' || family === 'r';
   if (operator === '<-' || operator === '<<-' || operator === '->>' || operator.startsWith('%')) return family === 'r' || (operator === '->' && family !== 'r');
   if (operator === '//') return family === 'julia' || family === 'python' || family === 'fortran';

@@ -2,7 +2,8 @@
 import type { Finding } from '../protocol.ts';
 import type { SeriesBranch } from '../read/index.ts';
 import type { Claim } from './claims.ts';
-import { findingOf, type Place } from './findings.ts';
+import { findingOf } from './findings.ts';
+import type { Place } from './verdicts.ts';
 import type { PolynomialReader } from './remarks.ts';
 import type { Asked } from './setting.ts';
 

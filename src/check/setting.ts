@@ -134,7 +134,8 @@ function pointsFor(side: Expression, name: string): readonly (Expression | 'inf'
 
 const sumTerms = (e: Expression | undefined): readonly Expression[] => (e?.kind === 'sum' ? e.terms : e ? [e] : []);
 
-function exponentOf(e: Expression, name: string): number | null {
+/** The power of the symbol in a product of powers; null where it occurs in another way. */
+export function exponentOf(e: Expression, name: string): number | null {
   switch (e.kind) {
     case 'negation':
       return exponentOf(e.operand, name);
@@ -160,7 +161,7 @@ const add = (a: number | null, b: number | null): number | null => (a === null |
 const negate = (a: number | null): number | null => (a === null ? null : -a);
 
 /** The a of powers of (x - a), where x occurs in no other way in the sum. */
-function shiftIn(e: Expression, name: string): Expression | null {
+export function shiftIn(e: Expression, name: string): Expression | null {
   const shifts: Expression[] = [];
   let loose = false;
   const visit = (node: Expression): void => {
@@ -177,7 +178,7 @@ function shiftIn(e: Expression, name: string): Expression | null {
   return first && !loose ? first : null;
 }
 /** The a of x - a, x + b or a - x. */
-function twoTermZero({ terms }: SumNode, name: string): Expression | null {
+export function twoTermZero({ terms }: SumNode, name: string): Expression | null {
   const [a, b] = terms;
   if (!a || !b || terms.length !== 2) return null;
   if (a.kind === 'symbol' && a.name === name && !dependsOn(b, name)) return b.kind === 'negation' ? b.operand : build.negation(b);

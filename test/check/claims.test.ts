@@ -53,6 +53,33 @@ describe('claims of public documents', () => {
   });
 });
 
+describe('a left side that is only a name', () => {
+  it.each(WITHOUT_FUNCTION)('%s asked alone is undecided with that reason', (id) => {
+    const row = ROWS.find((r) => r.id === id);
+    const found = row ? findings(row.text, { language: row.language, variable: row.variable, point: row.point }) : [];
+    expect(found.map((f) => [f.verdict, f.severity])).toEqual([['undecided', 'hint']]);
+    expect(found[0]?.reason).toContain('is only a name');
+  });
+  it.each([
+    'A perturbation expansion gives $y = 1 - \\epsilon t + \\frac12\\epsilon^2 t^2$.',
+    'The root is $x(\\epsilon) = -2 + \\frac19 \\epsilon$.',
+    'For $v \\ll c$, $E = m c^2 + \\frac{1}{3} m v^2$.',
+  ])('%s is listed', (text) => {
+    expect(findings(text).map((f) => f.verdict)).toEqual(['undecided']);
+  });
+  it.each([
+    'The position is $x = x_0 + v t$ and $s = ut + \\frac12 a t^2$.',
+    'The field $D = \\epsilon E + P$ is measured.',
+    'Let $f(x) = 1 - x + x^2$ and $g(x) = x^3$.',
+    'A solution is sought as $y = y_0 + \\epsilon y_1 + \\epsilon^2 y_2 + \\dots$.',
+  ])('%s defines and claims nothing', (text) => {
+    expect(findings(text)).toEqual([]);
+  });
+  it('is resolved where its definition stands before', () => {
+    expect(verdictOf(findings('Let $E = m c^2/\\sqrt{1-v^2/c^2}$. For $v \\ll c$, $E = m c^2 + \\frac{1}{2} m v^2$'))).toBe('holds');
+  });
+});
+
 describe('remainder marks', () => {
   it.each([
     ['\\sin x = x - \\frac{x^3}{6} + O(x^5)', 'holds', 'none'],

@@ -1,17 +1,16 @@
 /** Principal logarithms: products become sums, powers become factors, where the signs allow it. */
 import { Q, type Rational } from '../expression/index.ts';
 import { constantKernel, type Context, imaginaryKernel, isZeroRational, kernelElement, logKernel, minus, rationalOf, withSquaresJoined } from './context.ts';
-import { compareExponents, type Exponent, isWhole } from './exponent.ts';
+import { compareExponents, type Exponent } from './exponent.ts';
+import { splitBySigns } from './factorsBySign.ts';
 import { factorInteger } from './integers.ts';
 import { noteLogarithm } from './joinedLogarithms.ts';
 import type { Kernel } from './kernel.ts';
-import { isOnePolynomial, type Polynomial, scalePolynomial } from './polynomial.ts';
 import { absolute, divideElements, isNumericRadicand, plus, requireNonZero, times } from './powers.ts';
-import { elementFromPolynomial, negateElement, scaleElement, wholePower } from './quotient.ts';
+import { negateElement, scaleElement } from './quotient.ts';
 import { isQuotient, partsOf } from './quotientParts.ts';
-import { isNonNegative, isRealSet, NEGATIVE, NIL, POSITIVE } from './signs.ts';
-import { asElement, byImaginaryUnit, rationalMultiple, singleKernel } from './split.ts';
-import { squareFreeFactors } from './squareFree.ts';
+import { isNonNegative, isRealSet, POSITIVE } from './signs.ts';
+import { byImaginaryUnit, rationalMultiple, singleKernel } from './split.ts';
 import type { Element } from './types.ts';
 
 /** log|c| for a rational c that is not zero. */
@@ -36,51 +35,30 @@ export function logarithm(ctx: Context, a: Element): Element {
   return value;
 }
 
+/** log a without square roots joined first. */
 function splitLogarithm(ctx: Context, a: Element): Element {
   requireNonZero(ctx, a, 'argument of a logarithm');
-  const parts = partsOf(a);
-  let result = logOfRational(ctx, parts.content);
-  let negative = parts.content.num < 0n;
-  let open: Element = Q.ONE;
-  const take = (factor: Element): void => void (open = times(ctx, open, factor));
-  parts.monomial.kernels.forEach((index, j) => {
-    const kernel = ctx.table.kernels[index] as Kernel;
-    const e = parts.monomial.exponents[j] as Exponent;
-    const sign = ctx.signs.ofKernel(kernel);
-    const shape = kernel.shape;
-    if (shape.kind === 'exp' && isNonNegative(sign)) result = plus(ctx, result, multiple(shape.unit, e));
-    else if (shape.kind === 'power' && isNonNegative(sign)) result = plus(ctx, result, multiple(times(ctx, shape.unit, splitLogarithm(ctx, shape.base)), e));
-    else if (shape.kind === 'integer') result = plus(ctx, result, multiple(logOfRational(ctx, Q.rational(shape.value)), e));
-    else if (shape.kind === 'radicand' && isNonNegative(sign)) result = plus(ctx, result, multiple(splitLogarithm(ctx, shape.base), e));
-    else if (isNonNegative(sign)) result = plus(ctx, result, multiple(kernelElement(ctx, logKernel(ctx, kernelElement(ctx, kernel))), e));
-    else if (isWhole(e) && (sign & ~(NEGATIVE | NIL)) === 0) {
-      result = plus(ctx, result, multiple(kernelElement(ctx, logKernel(ctx, negateElement(kernelElement(ctx, kernel)))), e));
-      if (e % 2 !== 0) negative = !negative;
-    } else if (isWhole(e) && isRealSet(sign) && shape.kind !== 'exp' && shape.kind !== 'power') {
-      const even = e % 2 === 0 ? e : e - 1;
-      if (even !== 0) result = plus(ctx, result, multiple(splitLogarithm(ctx, absolute(ctx, kernelElement(ctx, kernel))), even));
-      if (even !== e) take(kernelElement(ctx, kernel));
-    } else take(kernelElement(ctx, kernel, e));
+  let result = logOfRational(ctx, partsOf(a).content);
+  const add = (term: Element, e: Exponent): void => void (result = plus(ctx, result, multiple(term, e)));
+  const { negative, open } = splitBySigns(ctx, a, {
+    kernel: (kernel, e) => {
+      const { shape } = kernel;
+      switch (shape.kind) {
+        case 'exp':
+          return add(shape.unit, e);
+        case 'power':
+          return add(times(ctx, shape.unit, splitLogarithm(ctx, shape.base)), e);
+        case 'integer':
+          return add(logOfRational(ctx, Q.rational(shape.value)), e);
+        case 'radicand':
+          return add(splitLogarithm(ctx, shape.base), e);
+        default:
+          return add(kernelElement(ctx, logKernel(ctx, kernelElement(ctx, kernel))), e);
+      }
+    },
+    positive: (u, e) => add(kernelElement(ctx, logKernel(ctx, u)), e),
+    even: (u, e) => add(splitLogarithm(ctx, absolute(ctx, u)), e),
   });
-  const polynomial = (f: Polynomial, power: number): void => {
-    if (isOnePolynomial(f)) return;
-    for (const factor of squareFreeFactors(f, ctx.table.check)) {
-      const e = factor.exponent * power;
-      const u = asElement(ctx, factor.polynomial);
-      const sign = ctx.signs.of(u);
-      if (isNonNegative(sign)) result = plus(ctx, result, multiple(kernelElement(ctx, logKernel(ctx, u)), e));
-      else if ((sign & ~(NEGATIVE | NIL)) === 0) {
-        result = plus(ctx, result, multiple(kernelElement(ctx, logKernel(ctx, elementFromPolynomial(ctx.table, scalePolynomial(factor.polynomial, -1n)))), e));
-        if (e % 2 !== 0) negative = !negative;
-      } else if (isRealSet(sign)) {
-        const even = e % 2 === 0 ? e : e - 1;
-        if (even !== 0) result = plus(ctx, result, multiple(splitLogarithm(ctx, absolute(ctx, u)), even));
-        if (even !== e) take(u);
-      } else take(wholePower(ctx.table, u, e));
-    }
-  };
-  polynomial(parts.numerator, 1);
-  for (const f of parts.denominator) polynomial(f.polynomial, -f.exponent);
   const iPi = times(ctx, kernelElement(ctx, imaginaryKernel(ctx)), kernelElement(ctx, constantKernel(ctx, 'pi')));
   if (!isQuotient(open)) return (open.num < 0n) !== negative ? plus(ctx, result, iPi) : result;
   const base = negative ? negateElement(open) : open;

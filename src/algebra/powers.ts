@@ -3,6 +3,7 @@ import { Q, type Rational } from '../expression/index.ts';
 import { type Context, imaginaryKernel, isZeroRational, kernelElement, powerKernel, rationalOf, undecided, valueless, withSquaresJoined } from './context.ts';
 import { denestedCubeRoot, denestedSquareRoot, dependentSquareRoot } from './denest.ts';
 import { compareExponents, type Exponent, exponentFromRational, isWhole, multiplyExponents } from './exponent.ts';
+import { splitBySigns } from './factorsBySign.ts';
 import type { Kernel } from './kernel.ts';
 import { monomialOf, multiplyMonomials } from './monomial.ts';
 import { isOnePolynomial, kernelsIn, type Polynomial } from './polynomial.ts';
@@ -11,7 +12,6 @@ import { isQuotient, partsOf } from './quotientParts.ts';
 import { positiveRationalPower, radicandPower } from './radicals.ts';
 import { isNonNegative, isRealSet, NEGATIVE, NIL } from './signs.ts';
 import { asElement, byImaginaryUnit, singleKernel } from './split.ts';
-import { squareFreeFactors } from './squareFree.ts';
 import type { Element } from './types.ts';
 import { cosineOfPi, sineOfPi } from './unitCircle.ts';
 
@@ -81,49 +81,15 @@ export function rationalPower(ctx: Context, base: Element, r: Rational): Element
     throw valueless('A negative power of zero has no value; choose another point or parameter.');
   }
   const exponent = exponentFromRational(r);
-  const parts = partsOf(a);
-  if (parts.content.den !== 1n && r.den === 2n && isQuotient(a)) ctx.fractionRoots.add(elementKey(scaleElement(a, Q.reciprocal(parts.content))));
-  let result = positiveRationalPower(ctx, parts.content, r);
-  let negative = parts.content.num < 0n;
-  let open: Element = Q.ONE;
-  const take = (factor: Element): void => void (open = times(ctx, open, factor));
-  parts.monomial.kernels.forEach((index, i) => {
-    const kernel = ctx.table.kernels[index] as Kernel;
-    const e = parts.monomial.exponents[i] as Exponent;
-    const sign = ctx.signs.ofKernel(kernel);
-    if (isNonNegative(sign)) {
-      if (kernel.relation && !kernel.relation.pure) {
-        result = times(ctx, result, radicandPower(ctx, kernelElement(ctx, kernel, e), exponent));
-      } else result = times(ctx, result, kernelElement(ctx, kernel, multiplyExponents(e, exponent)));
-    } else if (isWhole(e) && (sign & ~(NEGATIVE | NIL)) === 0) {
-      result = times(ctx, result, radicandRationalPower(ctx, negateElement(kernelElement(ctx, kernel)), Q.multiply(r, Q.rational(e))));
-      if (e % 2 !== 0) negative = !negative;
-    } else if (isWhole(e) && isRealSet(sign) && kernel.shape.kind !== 'exp' && kernel.shape.kind !== 'power') {
-      const even = e % 2 === 0 ? e : e - 1;
-      if (even !== 0) result = times(ctx, result, rationalPower(ctx, absolute(ctx, kernelElement(ctx, kernel)), Q.multiply(r, Q.rational(even))));
-      if (even !== e) take(kernelElement(ctx, kernel));
-    } else take(kernelElement(ctx, kernel, e));
+  const { content } = partsOf(a);
+  if (content.den !== 1n && r.den === 2n && isQuotient(a)) ctx.fractionRoots.add(elementKey(scaleElement(a, Q.reciprocal(content))));
+  let result = positiveRationalPower(ctx, content, r);
+  const take = (factor: Element): void => void (result = times(ctx, result, factor));
+  const { negative, open } = splitBySigns(ctx, a, {
+    kernel: (kernel, e) => take(kernel.relation && !kernel.relation.pure ? radicandPower(ctx, kernelElement(ctx, kernel, e), exponent) : kernelElement(ctx, kernel, multiplyExponents(e, exponent))),
+    positive: (u, e) => take(radicandRationalPower(ctx, u, Q.multiply(r, Q.rational(e)))),
+    even: (u, e) => take(rationalPower(ctx, absolute(ctx, u), Q.multiply(r, Q.rational(e)))),
   });
-  const polynomial = (f: Polynomial, power: number): void => {
-    if (isOnePolynomial(f)) return;
-    for (const factor of squareFreeFactors(f, ctx.table.check)) {
-      const e = factor.exponent * power;
-      const u = asElement(ctx, factor.polynomial);
-      const sign = ctx.signs.of(u);
-      const r2 = Q.multiply(r, Q.rational(e));
-      if (isNonNegative(sign)) result = times(ctx, result, radicandRationalPower(ctx, u, r2));
-      else if ((sign & ~(NEGATIVE | NIL)) === 0) {
-        result = times(ctx, result, radicandRationalPower(ctx, negateElement(u), r2));
-        if (e % 2 !== 0) negative = !negative;
-      } else if (isRealSet(sign)) {
-        const even = e % 2 === 0 ? e : e - 1;
-        if (even !== 0) result = times(ctx, result, rationalPower(ctx, absolute(ctx, u), Q.multiply(r, Q.rational(even))));
-        if (even !== e) take(u);
-      } else take(wholePower(ctx.table, u, e));
-    }
-  };
-  polynomial(parts.numerator, 1);
-  for (const f of parts.denominator) polynomial(f.polynomial, -f.exponent);
   if (!isQuotient(open)) {
     const sign = (open.num < 0n) !== negative;
     return sign ? times(ctx, result, rootOfUnity(ctx, r)) : result;

@@ -51,18 +51,19 @@ export function accuracyFinding(statement: Statement, printed: Claim, given: Exp
   }
 }
 
-/** A region of convergence beside dots or an infinite sum that is larger than the disc. */
+/** A region of convergence beside dots or an infinite sum that is larger than the disc, or holds an end at which the series diverges. */
 export function regionFinding(printed: Claim, given: Expression, setting: Setting, place: Place): Finding | null {
   const endless = [...walk(printed.side)].some((n) => n.kind === 'dots' || (n.kind === 'indexedSum' && n.upper.kind === 'constant'));
   if (!endless || printed.relation === 'tilde') return null;
   const { end } = place.formula.span;
-  const region = regionBeside(place.text, place.around.conditions, end, Math.min(end + ACCURACY_REACH, place.until ?? Infinity), setting.variable);
+  const region = regionBeside(place.text, place.around.conditions, printed.span.end, end, Math.min(end + ACCURACY_REACH, place.until ?? Infinity), setting.variable);
   const error = region && regionError(region, prepared(given, printed, setting).f, setting);
   if (!error) return null;
   const notation = notationOf(place.text.slice(place.formula.span.start, place.formula.span.end), place.formula.notation);
-  const right = writeIn(notation, error.radius);
+  const right = writeIn(notation, error.value);
   const base = { ...error.place, claim: printed.span, verdict: 'fails' as const, severity: 'error' as const, found: right, ...labelOf(place) };
-  return { ...base, reason: `${error.reason}: the radius of convergence is ${right}.`, fix: error.bound && { ...error.bound, text: right } };
+  const reason = error.reason ? `${error.reason}: the radius of convergence is ${right}.` : `The series diverges at ${right}, an end of this region.`;
+  return { ...base, reason, fix: error.fix && { start: error.fix.start, end: error.fix.end, text: error.fix.text ?? right } };
 }
 
 const ACCURACY_REACH = 160;

@@ -41,7 +41,7 @@ export function checkClaim(claim: Claim, given: Expression | null, definitions: 
 }
 
 /** The words by which running text says that what it prints is cut off. */
-const CUT_OFF = /\bexpan(?:d\w*|sions?)\b|\bseries\b|\bapproximat\w+|\bperturbat\w+|\basymptotic\w*|\b(?:leading|lowest|first|second|third|next)[-\s]order\b|\b(?:to|up to|at) order\b|\bneglect\w*/i;
+const CUT_OFF = /\bexpan(?:d\w*|sions?)\b|\bseries\b|\bapproximat\w+|\bperturbat\w+|\basymptotic\w*|\b(?:leading|lowest|first|second|third|next)[-\s]order\b|\b(?:to|up to|at) order\b|\bneglect\w*|\bsmall\b|\\ll(?![a-z])|≪/i;
 /** Letters that the trade keeps for what is small. */
 const SMALL_LETTER = /^(?:\\(?:var)?epsilon|ε|ϵ)(?:_|$)/;
 

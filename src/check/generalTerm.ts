@@ -11,8 +11,12 @@ import { differentiate } from '../functions/index.ts';
 /** c(k+1)/c(k) = factor * product of above / product of below, each linear in k. */
 interface Ratio {
   readonly factor: Expression;
-  readonly above: readonly Linear[];
-  readonly below: readonly Linear[];
+  readonly above: readonly Factor[];
+  readonly below: readonly Factor[];
+}
+/** slope k + shift, and what is added to it that does not hold k: the alpha of (alpha - k). */
+interface Factor extends Linear {
+  readonly parameter?: Expression;
 }
 
 const ONE: Ratio = { factor: build.number(1), above: [], below: [] };
@@ -73,12 +77,19 @@ function callRatio(id: string, args: readonly Expression[], index: string): Rati
   }
   if (id === 'binomial' && first && second) {
     const [n, k] = [linearIn(first, index), linearIn(second, index)];
+    if (k && !dependsOn(first, index)) return upperParameter(first, k);
     if (!n || !k) return null;
     const parts = [factorialRatio(n), factorialRatio(k), factorialRatio({ slope: Q.subtract(n.slope, k.slope), shift: Q.subtract(n.shift, k.shift) })];
     const [a, b, d] = parts;
     return a && b && d ? multiply(a, multiply(invert(b), invert(d))) : null;
   }
   return null;
+}
+
+/** Binomial(a, k + t) advances by (a - k - t)/(k + t + 1). */
+function upperParameter(a: Expression, lower: Linear): Ratio | null {
+  if (!Q.equal(lower.slope, Q.ONE)) return null;
+  return { ...ONE, above: [{ slope: Q.MINUS_ONE, shift: Q.negate(lower.shift), parameter: a }], below: [{ slope: Q.ONE, shift: Q.add(lower.shift, Q.ONE) }] };
 }
 
 /** (s k + t)! advances by (s k + t + 1) ... (s k + t + s). */
@@ -157,7 +168,7 @@ export function isProved(f: Expression, term: GeneralTerm, lower: number, agreei
   if (typeof setting.point !== 'object' || setting.point.kind !== 'number' || !Q.isZero(setting.point.value)) return false;
   // A later index at which the equation leaves a coefficient free would break uniqueness.
   const limit = Q.rational(lower + agreeing - 2);
-  if (ratio.below.some((l) => Q.isZero(l.slope) || Q.compare(Q.negate(Q.divide(l.shift, l.slope)), limit) >= 0)) return false;
+  if (ratio.below.some((l) => l.parameter !== undefined || Q.isZero(l.slope) || Q.compare(Q.negate(Q.divide(l.shift, l.slope)), limit) >= 0)) return false;
   const x = setting.variable;
   const first = build.product(atIndex(term.coefficient, term.index, lower), build.power(build.symbol(x), Q.add(Q.multiply(slope, Q.rational(lower)), shift)));
   const left = applyAll(build.difference(f, first), ratio.below, term.power, Q.MINUS_ONE, x);
@@ -173,7 +184,7 @@ export function isProved(f: Expression, term: GeneralTerm, lower: number, agreei
 }
 
 /** Product of (slope (T + offset) + shift) over the factors, T = (x d/dx - b)/s, applied to g. */
-function applyAll(g: Expression, factors: readonly Linear[], power: Linear, offset: Rational, x: string): Expression | null {
+function applyAll(g: Expression, factors: readonly Factor[], power: Linear, offset: Rational, x: string): Expression | null {
   let result: Expression = g;
   for (const l of factors) {
     const slope = differentiate(result, x);
@@ -182,7 +193,7 @@ function applyAll(g: Expression, factors: readonly Linear[], power: Linear, offs
     const scale = Q.divide(l.slope, power.slope);
     // l.slope * ((theta - b)/s + offset) + l.shift
     const constant = Q.add(Q.add(Q.multiply(Q.negate(power.shift), scale), Q.multiply(l.slope, offset)), l.shift);
-    result = build.sum(build.product(build.number(scale), theta), build.product(build.number(constant), result));
+    result = build.sum(build.product(build.number(scale), theta), build.product(l.parameter ? build.sum(build.number(constant), l.parameter) : build.number(constant), result));
   }
   return result;
 }

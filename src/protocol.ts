@@ -167,7 +167,7 @@ export interface LadderRow {
   readonly bound: string | null;
 }
 
-/** For a number of terms: the largest proven distance from the point within which the tolerance holds. */
+/** For a number of terms: the largest proven distance from the point (1/|x| at infinity) within which the tolerance holds. Without `details`, a `tolerance` without `interval` is answered by the row of the terms asked for. */
 export interface ReachRow {
   readonly terms: number;
   readonly order: string;

@@ -3,7 +3,7 @@
  * By the identity theorem it does wherever the function is analytic along the way.
  */
 import type { Expansion } from '../expand/index.ts';
-import { dependsOn, type Expression } from '../expression/index.ts';
+import { build, dependsOn, type Expression, mapChildren } from '../expression/index.ts';
 import { describe } from '../functions/index.ts';
 import { type Ball, complex, type ComplexBall, enclose, encloseReal, real } from '../rigorous/index.ts';
 import type { ClosedInterval } from './types.ts';
@@ -51,17 +51,44 @@ export function isExactOn(expansion: Expansion, interval: ClosedInterval, variab
   const [first, ...rest] = ends;
   if (!first || rest.some((b) => b === null)) return false;
   const hull = rest.reduce<Ball>((all, b) => (b ? real.union(all, b, BITS) : all), first);
+  // On the hull f is what its extremes and absolute values are there.
+  const whole = decided(expansion.function, new Map([...parameters, [variable, hull]]));
+  if (isOnePiece(whole, variable)) return true;
   const environment = new Map<string, ComplexBall>([...parameters].map(([name, b]) => [name, complex.fromReal(b)]));
   const analytic = (part: Ball, depth: number): boolean => {
     // A little wider than the piece, so that neighbouring pieces overlap in an open set.
     const width = real.scaleByPowerOfTwo(real.union(real.ZERO, real.absolute(real.subtract(hull, real.midpoint(hull), BITS)), BITS), -10);
     const symmetric = real.union(width, real.negate(width), BITS);
     const box = complex.fromParts(real.add(part, symmetric, BITS), symmetric);
-    if (enclose(expansion.function, new Map(environment).set(variable, box), BITS, describe, true)) return true;
+    if (enclose(whole, new Map(environment).set(variable, box), BITS, describe, true)) return true;
     if (depth === 0) return false;
     const middle = real.midpoint(part);
     const [low, high] = [real.fromRational(real.lower(part), BITS), real.fromRational(real.upper(part), BITS)];
     return analytic(real.union(low, middle, BITS), depth - 1) && analytic(real.union(middle, high, BITS), depth - 1);
   };
   return analytic(hull, DEEPEST);
+}
+
+/** The tree with each extreme and absolute value of two sides whose order is the same on all of the sets written as the side that it is. */
+function decided(e: Expression, sets: ReadonlyMap<string, Ball>): Expression {
+  const tree = mapChildren(e, (part) => decided(part, sets));
+  if (tree.kind !== 'call') return tree;
+  const signOf = (part: Expression): 1 | -1 | 0 => {
+    const value = encloseReal(part, sets, BITS, describe);
+    return value === null ? 0 : real.isNonNegative(value) ? 1 : real.isNonNegative(real.negate(value)) ? -1 : 0;
+  };
+  const [first, ...rest] = tree.args;
+  if (!first) return tree;
+  if (tree.function === 'abs' && rest.length === 0) {
+    const sign = signOf(first);
+    return sign > 0 ? first : sign < 0 ? build.negation(first) : tree;
+  }
+  if (tree.function !== 'max' && tree.function !== 'min') return tree;
+  let winner = first;
+  for (const next of rest) {
+    const sign = signOf(build.difference(next, winner));
+    if (sign === 0) return tree;
+    if (sign > 0 === (tree.function === 'max')) winner = next;
+  }
+  return winner;
 }

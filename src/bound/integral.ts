@@ -61,6 +61,16 @@ export function integralValue(expression: Expression, tolerance: Rational, assum
   };
 }
 
+/** The value of an expression with definite integrals whose limits and integrands are numbers, to about the precision; null where there is none to enclose. */
+export function encloseWithIntegrals(expression: Expression, parameters: ParameterBalls, precision: number, budget: Budget): Ball | null {
+  try {
+    return valueOf(expression, parameters, precision + 40, real.scaleByPowerOfTwo(real.ONE, -precision), { pieces: 0 }, () => budget.check(), []);
+  } catch (error) {
+    if (error instanceof Declined && error.failure.code !== 'over-budget') return null;
+    throw error;
+  }
+}
+
 function valueOf(expression: Expression, parameters: ParameterBalls, precision: number, tolerance: Ball, counter: { pieces: number }, check: () => void, assumptions: readonly Assumption[]): Ball {
   const found = new Map<string, Ball>();
   const visit = (e: Expression): Expression => {

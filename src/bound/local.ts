@@ -10,6 +10,7 @@ import { besselSeriesModel } from './besselAtZero.ts';
 import { envelopeModel } from './enveloping.ts';
 import { kelvinSeriesModel } from './kelvinAtZero.ts';
 import { lambertBranchModel } from './lambertBranch.ts';
+import { parameterIntegral } from './parameterIntegral.ts';
 import { rewriteCall } from './rewrite.ts';
 import { specialModel } from './special.ts';
 
@@ -44,7 +45,21 @@ export function modelOf<T>(e: Expression, n: Numbers<T>, m: ModelArithmetic<T>, 
 export function logModelOf<T>(e: Expression, n: Numbers<T>, m: ModelArithmetic<T>, variable: string, leaf: Model<T>, vanishes?: (e: Expression) => boolean, check?: () => void): LogModel<T> | null {
   const environment = new Map([...parameterModels(n, m), [variable, leaf] as const]);
   if (environment.size > PARAMETER_LIMIT) return null;
-  return logModelOfTree(e, { m, trees: n.trees, real: n.r, describe, environment, vanishes, check, call: (id, args, models, isConstant) => envelopeModel(id, args, models, n, m) ?? besselSeriesModel(id, args, models, n, m) ?? kelvinSeriesModel(id, args, models, n, m) ?? lambertBranchModel(id, models, n, m) ?? specialModel(id, args, models, n, m, isConstant), rewrite: (id, args, models) => rewriteCall(id, args, models, n, m), simplify: (tree) => (n.r.isPositive(leaf.range) ? normalForm(tree, variable, '>') : n.r.isNegative(leaf.range) ? normalForm(tree, variable, '<') : tree) });
+  const within = (tree: Expression, symbols: ReadonlyMap<string, Model<T>>, proof?: (e: Expression) => boolean): LogModel<T> | null =>
+    logModelOfTree(tree, {
+      m,
+      trees: n.trees,
+      real: n.r,
+      describe,
+      environment: symbols,
+      vanishes: proof,
+      check,
+      call: (id, args, models, isConstant) => envelopeModel(id, args, models, n, m) ?? besselSeriesModel(id, args, models, n, m) ?? kelvinSeriesModel(id, args, models, n, m) ?? lambertBranchModel(id, models, n, m) ?? specialModel(id, args, models, n, m, isConstant),
+      rewrite: (id, args, models) => rewriteCall(id, args, models, n, m),
+      integral: (node, beside) => parameterIntegral(node, beside, n, m, (body, around) => within(body, around)),
+      simplify: (part) => (n.r.isPositive(leaf.range) ? normalForm(part, variable, '>') : n.r.isNegative(leaf.range) ? normalForm(part, variable, '<') : part),
+    });
+  return within(e, environment, vanishes);
 }
 
 /** Nothing but powers of t and of its logarithm. */

@@ -1,5 +1,5 @@
 /** Special functions of an argument that tends to zero as powers and logarithms times series that converge there. */
-import { build, type Expression, Q, rationalOf } from '../expression/index.ts';
+import { build, type Expression, Q, type Rational, rationalOf } from '../expression/index.ts';
 import { besselAtZero } from './besselAtZero.ts';
 import { kelvinAtZero } from './kelvinAtZero.ts';
 
@@ -47,6 +47,23 @@ export function nearZero(id: string, args: readonly Expression[], x: Expression,
     case 'kelvinKer':
     case 'kelvinKei':
       return sign > 0 ? kelvinAtZero(id, args, x, sign) : null;
+    case 'ein':
+      // sum -(-x)^k/(k k!) (DLMF 6.6.4).
+      return product(x, call('hypergeometric', number(2), number(2), number(1), number(1), number(2), number(2), negation(x)));
+    case 'cin': {
+      // The series of DLMF 6.6.6 without its logarithm.
+      const square = quotient(power(x, 2), number(4));
+      return product(square, call('hypergeometric', number(2), number(3), number(1), number(1), number(2), number(2), number({ num: 3n, den: 2n }), negation(square)));
+    }
+    case 'sinIntegral':
+    case 'sinhIntegral': {
+      // DLMF 6.6.5.
+      const square = quotient(power(x, 2), number(4));
+      const raised = number({ num: 3n, den: 2n });
+      return product(x, call('hypergeometric', number(1), number(2), number({ num: 1n, den: 2n }), raised, raised, id === 'sinIntegral' ? negation(square) : square));
+    }
+    case 'parabolicD':
+      return parabolicAtZero(args, x);
     case 'dawson':
       // DLMF 7.5.1 with 7.11.4 and 13.2.39.
       return product(x, call('hypergeometric', number(1), number(1), number(1), number({ num: 3n, den: 2n }), negation(power(x, 2))));
@@ -75,4 +92,18 @@ export function nearZero(id: string, args: readonly Expression[], x: Expression,
     default:
       return null;
   }
+}
+
+/** D_p by even and odd parts (DLMF 12.4.1 with 12.2.6, 12.7.12 and 13.2.39); a part vanishes where its gamma function has a pole. */
+function parabolicAtZero(args: readonly Expression[], x: Expression): Expression | null {
+  const p = args[0] && rationalOf(args[0]);
+  if (!p) return null;
+  const half = (q: Rational): Rational => Q.multiply(q, Q.HALF);
+  const [up, down] = [half(Q.subtract(Q.ONE, p)), half(Q.negate(p))];
+  const square = quotient(power(x, 2), number(2));
+  const part = (gammaArgument: Rational, factor: Expression, top: Rational, bottom: Rational): readonly Expression[] =>
+    Q.isInteger(gammaArgument) && gammaArgument.num <= 0n ? [] : [quotient(product(factor, call('hypergeometric', number(1), number(1), number(top), number(bottom), square)), call('gamma', number(gammaArgument)))];
+  const even = part(up, build.squareRoot(constant('pi')), down, Q.HALF);
+  const odd = part(down, product(build.squareRoot(product(number(2), constant('pi'))), x), up, Q.rational(3, 2)).map(negation);
+  return product(power(number(2), half(p)), exp(negation(quotient(power(x, 2), number(4)))), sum(...even, ...odd));
 }

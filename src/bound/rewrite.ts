@@ -1,5 +1,6 @@
 /** Exact identities that bring a special function to a place where it can be modelled: away from poles, its logarithm in the open, or its asymptotic series with a proven remainder. */
 import { build, type Expression, Q } from '../expression/index.ts';
+import { describe } from '../functions/index.ts';
 import type { Model, ModelArithmetic } from '../rigorous/index.ts';
 import { lambertAtBranch } from './lambertBranch.ts';
 import { nearZero } from './nearZero.ts';
@@ -23,6 +24,8 @@ export function rewriteCall<T>(id: string, args: readonly Expression[], models: 
   const last = models.length - 1;
   const [u, x] = [models[last], args[last]];
   if (u === undefined || x === undefined) return null;
+  // A polynomial wherever it stands.
+  if (id === 'bernoulliPolynomial') return describe(id)?.value?.(args) ?? null;
   if (u.valuation < 0) return atInfinity(id, args, x, r.isPositive(u.range) ? 1 : r.isNegative(u.range) ? -1 : 0);
   if (u.valuation > 0) {
     const small = nearZero(id, args, x, r.isPositive(u.range) ? 1 : r.isNegative(u.range) ? -1 : 0);

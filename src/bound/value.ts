@@ -1,9 +1,10 @@
 /** f, the sum, the error and the percentage at one argument. */
-import { freeSymbols, type Assumption, type Expression } from '../expression/index.ts';
+import { freeSymbols, type Assumption, type Expression, substitute, walk } from '../expression/index.ts';
 import type { Expansion } from '../expand/index.ts';
 import { describe } from '../functions/index.ts';
 import { type Budget, Declined } from '../outcome.ts';
 import { type Ball, encloseReal, real } from '../rigorous/index.ts';
+import { encloseWithIntegrals } from './integral.ts';
 import { sumOf } from './local.ts';
 import { parameterBalls, compareReal } from './region.ts';
 import { variableName } from './remainder.ts';
@@ -17,12 +18,14 @@ export function valueAtArgument(expansion: Expansion, argument: Expression, assu
   const parameters = parameterBalls(names, assumptions);
   const side = expansion.left && expansion.point !== 'inf' && expansion.point !== '-inf' && compareReal(argument, expansion.point, assumptions) < 0 ? expansion.left : expansion;
   const sum = sumOf(side);
+  const integral = [...walk(side.function)].some((node) => node.kind === 'integral');
   for (let precision = 96; precision <= 6144; precision *= 2) {
     budget.check();
     const x = encloseReal(argument, parameters, precision, describe);
     if (x === null) throw new Declined('bad-request', 'The argument has no real value; give a number such as 0.3 or pi/6.');
     const environment = new Map([...parameters, [variable, x] as const]);
-    const [f, s] = [encloseReal(side.function, environment, precision, describe), encloseReal(sum, environment, precision, describe)];
+    const f = integral ? encloseWithIntegrals(substitute(side.function, variable, argument), parameters, precision, budget) : encloseReal(side.function, environment, precision, describe);
+    const s = encloseReal(sum, environment, precision, describe);
     if (f === null || s === null) {
       if (precision < 400) continue;
       const open = names.filter((name) => !parameters.has(name));

@@ -24,6 +24,7 @@ function expansion(answer: ExpandAnswer, request: Readonly<Record<string, unknow
     lines.push(value === null ? row('bound', `none${where}: unbounded at ${place ?? 'a point of the interval'}`) : row('bound', `${value}${factor ? ` * ${factor}` : ''}${where}, proven (${method})`));
   }
   if (answer.needed) lines.push(row('needed', needed(answer.needed)));
+  for (const { terms, distance } of answer.reach ?? []) lines.push(row('reach', `${terms} ${terms === 1 ? 'term' : 'terms'}: ${reachOf(distance, request)}`));
   if (answer.at) lines.push(row('at', `${answer.at.argument}: function ${answer.at.function}, sum ${answer.at.sum}, error ${answer.at.error}${answer.at.percent === null ? '' : ` (${answer.at.percent} %)`}`));
   if (answer.leastTerm) lines.push(row('best', `${answer.leastTerm.terms} terms at this argument; the first one left out is at most ${answer.leastTerm.size} there`));
   for (const piece of answer.replaced ?? []) lines.push(row('replaced', `${piece.from} by ${piece.to}${relativeError(piece)}`));
@@ -36,6 +37,12 @@ function expansion(answer: ExpandAnswer, request: Readonly<Record<string, unknow
   for (const line of answer.left ? expansion(answer.left, {}) : []) lines.push(`  from the left: ${line.trim()}`);
   for (const branch of answer.branches ?? []) lines.push(`  branch: ${branch.text}`);
   return lines;
+}
+
+function reachOf(distance: string | null, request: Readonly<Record<string, unknown>>): string {
+  const tolerance = typeof request['tolerance'] === 'number' || typeof request['tolerance'] === 'string' ? ` ${request['tolerance']}` : '';
+  if (distance === null) return `no distance from the point was proved within which the tolerance${tolerance} is kept`;
+  return distance === 'inf' ? `the tolerance${tolerance} is kept everywhere` : `the tolerance${tolerance} is kept within distance ${distance} of the point, proven`;
 }
 
 function relativeError({ relativeError: error }: ReplacedAnswer): string {

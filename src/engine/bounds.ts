@@ -46,7 +46,9 @@ export function withBounds(answer: ExpandAnswer, expander: Expander, request: Ex
     }
     if (details.has('plot')) result = { ...result, plot: plotAnswer(expander.first, interval.value) };
   }
-  if (details.has('reach')) result = { ...result, reach: reachRows(expander, shared, tolerance.value ?? DEFAULT_TOLERANCE) };
+  if (details.has('reach')) result = { ...result, reach: reachRows(expander, REACH_TERMS, shared, tolerance.value ?? DEFAULT_TOLERANCE) };
+  // A tolerance without an interval asks how far these terms serve; callers that name their details ask for the table instead.
+  else if (tolerance.value && !interval && request.details === undefined) result = { ...result, reach: reachRows(expander, [expander.first.terms.length], shared, tolerance.value) };
   if (request.at !== undefined) {
     const argument = readExact(request.at);
     if (!argument.ok) return failure('bad-request', `The argument "${request.at}" cannot be read: ${argument.error.message}`);
@@ -107,9 +109,9 @@ function neededAnswer(needed: TermsNeeded): NeededAnswer {
 
 const orderText = (expansion: Expansion): string => (expansion.remainder?.power ? toPlain(expansion.remainder.power) : expansion.remainder ? remainderText(expansion) : 'exact');
 
-function reachRows(expander: Expander, shared: { readonly measure: 'absolute' | 'relative'; readonly assumptions: readonly Assumption[]; readonly budget: Budget }, tolerance: Rational): readonly ReachRow[] {
+function reachRows(expander: Expander, counts: readonly number[], shared: { readonly measure: 'absolute' | 'relative'; readonly assumptions: readonly Assumption[]; readonly budget: Budget }, tolerance: Rational): readonly ReachRow[] {
   const rows: ReachRow[] = [];
-  for (const terms of REACH_TERMS) {
+  for (const terms of counts) {
     // What was expanded already need only be cut.
     const expansion = terms < expander.first.terms.length ? success(prefix(expander.first, terms)) : terms === expander.first.terms.length ? success(expander.first) : expander.withTerms(terms);
     if (!expansion.ok) break;

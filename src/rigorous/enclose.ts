@@ -266,10 +266,10 @@ export function encloseInterval(e: Expression, environment: ReadonlyMap<string, 
 }
 
 const complexIntervals = { false: complexArithmetic(intervalArithmetic), true: complexArithmetic(intervalArithmetic, true) };
-/** Complex rectangles of double intervals. */
-export function encloseRectangle(e: Expression, environment: ReadonlyMap<string, Rectangle<Interval>>, describe?: Describe, analytic = false): Rectangle<Interval> | null {
+/** Trees over complex rectangles of double intervals; with `analytic`, null at cuts. */
+export function rectangleTrees(analytic = false): TreeArithmetic<Rectangle<Interval>> {
   const a = complexIntervals[analytic ? 'true' : 'false'];
-  const trees: TreeArithmetic<Rectangle<Interval>> = {
+  return {
     a,
     i: a.i,
     root: (x, n) => complexRoot(a, x, n, analytic),
@@ -285,5 +285,9 @@ export function encloseRectangle(e: Expression, environment: ReadonlyMap<string,
       return value ? { re: fromBall(value.re), im: fromBall(value.im) } : null;
     },
   };
-  return evaluateTree(e, environment, trees, describe);
+}
+
+/** Complex rectangles of double intervals. */
+export function encloseRectangle(e: Expression, environment: ReadonlyMap<string, Rectangle<Interval>>, describe?: Describe, analytic = false): Rectangle<Interval> | null {
+  return evaluateTree(e, environment, rectangleTrees(analytic), describe);
 }

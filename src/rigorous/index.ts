@@ -12,7 +12,7 @@ export type { Rectangle } from './complex-field.ts';
 export * as interval from './doubles.ts';
 export { intervalArithmetic } from './interval-arithmetic.ts';
 export {
-  complexBallTrees, type Describe, type EnclosableFunction, enclose, encloseInterval, encloseReal, encloseRectangle, evaluateTree, intervalTrees, isElementaryName, realBallTrees, type TreeArithmetic,
+  complexBallTrees, type Describe, type EnclosableFunction, enclose, encloseInterval, encloseReal, encloseRectangle, evaluateTree, intervalTrees, isElementaryName, realBallTrees, rectangleTrees, type TreeArithmetic,
 } from './enclose.ts';
 /** Local models: truncated series with a proven remainder factor. */
 export type { Model, ModelArithmetic } from './model.types.ts';

@@ -1,5 +1,5 @@
 /** Local models of expression trees. */
-import { build, dependsOn, type Expression, freeSymbols, Q, rationalOf, walk } from '../expression/index.ts';
+import { build, dependsOn, type Expression, freeSymbols, type IntegralNode, Q, rationalOf, walk } from '../expression/index.ts';
 import type { RealArithmetic } from './arithmetic.ts';
 import { type EnclosableFunction, evaluateTree, isElementaryName, type TreeArithmetic } from './enclose.ts';
 import { logArithmetic, type LogModel } from './log-model.ts';
@@ -26,6 +26,8 @@ export interface ModelTreeContext<T> {
   readonly call?: (id: string, args: readonly Expression[], models: readonly Model<T>[], isConstant: (e: Expression) => boolean) => Model<T> | null;
   /** An identity for a call that suits the place of its arguments; what it returns is modelled instead. */
   readonly rewrite?: (id: string, args: readonly Expression[], models: readonly Model<T>[]) => Expression | null;
+  /** The model of a definite integral whose body or limits vary, in the environment of the symbols beside it. */
+  readonly integral?: (node: IntegralNode, environment: ReadonlyMap<string, Model<T>>) => Model<T> | null;
   /** An equal tree in which what cancels symbolically is gone: exponents that grow are added through it. */
   readonly simplify?: (e: Expression) => Expression;
   readonly check?: () => void;
@@ -116,6 +118,8 @@ export function logModelOfTree<T>(e: Expression, context: ModelTreeContext<T>): 
       }
       case 'call':
         return call(node.function, node.args, node);
+      case 'integral':
+        return one(context.integral?.(node, environment) ?? null);
       default:
         return null;
     }

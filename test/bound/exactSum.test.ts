@@ -12,9 +12,13 @@ describe('exact sums', () => {
     ['\\ln(e^x)', '0', ['0', '3']],
     ['\\sqrt{x}', '0', ['0', '2']],
     ['\\sqrt{x^2-2x+1}', '3', ['2', '4']],
+    ['\\min(x,2)', '1', ['55/64', '3/2']],
+    ['\\max(x,2,3-x)', '3', ['5/2', '4']],
+    ['|x-1|', '3', ['3/2', '4']],
   ] as const)('%s at %s is exact on %j', async (text, point, interval) => expect(await bounded(text, point, interval)).toMatchObject({ ok: true, bound: { value: '0' } }));
   it.each([
     ['|x-1|', '3', ['0', '4']],
+    ['\\min(x,2)', '1', ['0', '5/2']],
     ['\\sqrt{x^2-2x+1}', '3', ['0', '4']],
     ['\\arcsin(\\sin x)', '0', ['0', '3']],
     ['\\arctan(\\tan 3x)', '\\frac{23}{8}', ['35/16', '53/16']],

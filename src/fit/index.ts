@@ -1,6 +1,6 @@
 /** Door of fit/: polynomials for machines with a proven error, and their code. */
 export { fit, type Fit, type FitProblem, type KernelFit, type PieceFit, type SecondVariable } from './fit.ts';
-export { formatByName, type FloatFormat, type FixedFormat, type NumberFormat, ulpExponent } from './format.ts';
+export { formatByName, type FloatFormat, type FixedFormat, type NumberFormat, ulp, ulpExponent } from './format.ts';
 export { countOperations, type Arithmetic, type Operations, type Program } from './program.ts';
 export type { FitMeasure, ProvedError } from './proof.ts';
 export { estimatedSpeed, type Speed } from './speed.ts';

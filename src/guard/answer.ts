@@ -7,7 +7,7 @@ import type { Setting } from './setting.ts';
 import type { Guarded, GuardProblem, GuardRange } from './types.ts';
 import { commentOf, decimal } from './words.ts';
 
-export function answer(best: Candidate, candidates: readonly Candidate[], problem: GuardProblem, setting: Setting): Guarded {
+export function answer(best: Candidate, candidates: readonly Candidate[], problem: GuardProblem, setting: Setting, grows: boolean): Guarded {
   const { format, library, language, variable, function: f, point } = problem;
   const exact = candidates.filter((c) => c.form.identities.length > 0).sort((a, b) => a.whole - b.whole);
   const assumptions = [
@@ -16,6 +16,7 @@ export function answer(best: Candidate, candidates: readonly Candidate[], proble
     `each library call is within ${library} ulp; square roots are correctly rounded`,
     'holds with and without fusing of products and sums (a*b + c)',
     `where the value is below the smallest normal ${format.name} number the relative bound does not apply`,
+    ...(grows ? [`nor where the value is beyond half the largest ${format.name} number`] : []),
   ];
   const written = guardCode({
     name: problem.name ?? ['guarded'],

@@ -11,8 +11,12 @@ import type { Setting } from './setting.ts';
 import type { GuardProblem } from './types.ts';
 
 const MOST_TERMS = 24;
+/** A plainer form is kept where others gain less than this. */
+export const PREFERENCE = 1.4;
 /** Fewer terms are taken where more of them gain less than this. */
 const PLATEAU = 1.1;
+/** A series is looked at on an interval that comes this near to the point. */
+const WITHIN = Q.ONE;
 /** Switches whose series is bounded closely, for each number of terms. */
 const LOOKED_AT = 3;
 /** A few ulp, in unit roundoffs: better than that is no reason for a dearer form. */
@@ -42,9 +46,10 @@ export interface SharedSeries {
 export function seriesFor(problem: GuardProblem, sides: readonly Side[], scanner: Scanner, budget: Budget): SharedSeries | null {
   const { point, format, library, function: f, variable } = problem;
   if (typeof point === 'string' || !isRepresentable(point, format.name)) return null;
-  const touching = sides.filter((s) => Q.isZero(s.from));
+  const touching = sides.filter((s) => Q.compare(s.from, WITHIN) < 0);
   if (touching.length === 0) return null;
-  const terms = seriesTerms(f, variable, point, MOST_TERMS, { format, library }, budget);
+  const [only] = sides.length === 1 ? sides : [];
+  const terms = seriesTerms(f, variable, { point, direction: only?.direction ?? 'both' }, MOST_TERMS, { format, library }, budget);
   if (!terms) return null;
   const both = parityOf(f, variable) !== null && Q.isZero(point) ? touching.slice(0, 1) : touching;
   const truncations: Truncation[] = [];
@@ -88,9 +93,8 @@ function seriesError(shared: SharedSeries, n: number, h: Rational, problem: Guar
 const truncationError = (shared: SharedSeries, n: number, h: Rational, problem: GuardProblem): number =>
   Math.max(...shared.truncations.map((t) => (Q.compare(h, t.reach) <= 0 ? t.bound(formOf(shared, n, problem).tree, h) : Infinity)));
 
-export function candidate(form: ExactForm, sides: readonly Side[], setting: Setting, shared: SharedSeries | null, problem: GuardProblem, scanner: Scanner, budget: Budget): Candidate | null {
+export function candidate(form: ExactForm, sides: readonly Side[], setting: Setting, sharedSeries: () => SharedSeries | null, problem: GuardProblem, scanner: Scanner, budget: Budget): Candidate | null {
   const scans = sides.map((side) => scanner.scan(form.tree, side));
-  const touches = setting.sides.some((s) => Q.isZero(s.from)) && typeof problem.point !== 'string';
   const worst = (h: Rational): number | null => {
     let total = 0;
     for (const scan of scans) {
@@ -100,9 +104,19 @@ export function candidate(form: ExactForm, sides: readonly Side[], setting: Sett
     }
     return total;
   };
-  const everywhere = scans.every((s) => s.complete && (s.stretches.length > 0)) ? worst(Q.ZERO) ?? (touches ? null : Math.max(...scans.flatMap((s) => s.stretches.map((p) => p.bound)))) : null;
-  if (everywhere !== null) return { form, scans, series: null, seriesText: '', switch: null, seriesBound: null, directBound: everywhere, whole: everywhere };
-  if (!shared || !touches) return null;
+  const everywhere = scans.every((s) => s.complete && (s.stretches.length > 0)) ? Math.max(...scans.flatMap((s) => s.stretches.map((p) => p.bound))) : null;
+  const alone: Candidate | null = everywhere === null ? null : { form, scans, series: null, seriesText: '', switch: null, seriesBound: null, directBound: everywhere, whole: everywhere };
+  const { format } = problem;
+  const enough = Math.max(FEW_UNITS * 2 ** -format.precision, problem.tolerance ? Q.toDouble(problem.tolerance) : 0);
+  if (alone && alone.whole <= enough) return alone;
+  const shared = sharedSeries();
+  if (!shared) return alone;
+  const withSeries = seriesCandidate(form, scans, worst, setting, shared, problem, budget, scanner);
+  return alone && (!withSeries || alone.whole <= withSeries.whole * PREFERENCE) ? alone : withSeries;
+}
+
+/** The form beyond a switch and the series up to it, or the series alone. */
+function seriesCandidate(form: ExactForm, scans: readonly Scan[], worst: (h: Rational) => number | null, setting: Setting, shared: SharedSeries, problem: GuardProblem, budget: Budget, scanner: Scanner): Candidate | null {
   const { format } = problem;
   const distances = [...new Map(scans.flatMap((s) => s.stretches.map((p) => [Q.toText(p.low), p.low] as const))).values()]
     .filter((h) => h.num > 0n)
@@ -112,7 +126,7 @@ export function candidate(form: ExactForm, sides: readonly Side[], setting: Sett
   // The series may serve the whole interval.
   const ends = setting.sides.map((side) => side.to);
   const [end] = ends;
-  const whole = end && setting.sides.every((side) => Q.isZero(side.from) && side.to && Q.equal(side.to, end)) ? roundToFormat(end, format.name) : null;
+  const whole = end && setting.sides.every((side) => side.to && Q.equal(side.to, end)) ? roundToFormat(end, format.name) : null;
   // The expression itself may be replaced by its series everywhere; a rewritten form is kept for what it is.
   const rewritten = form.identities.length > 0;
   if (!rewritten && whole && end && Q.equal(whole, end)) distances.push(whole);

@@ -2,19 +2,17 @@
 import { dependsOn, freeSymbols, Q, type Rational } from '../expression/index.ts';
 import { parityOf } from '../fit/index.ts';
 import { differentiate } from '../functions/index.ts';
-import { type Budget, Declined } from '../outcome.ts';
+import { attempt, type Budget, Declined, type Outcome } from '../outcome.ts';
 import { powerOfTwo } from '../write/index.ts';
 import { answer } from './answer.ts';
-import { candidate, type Candidate, FEW_UNITS, seriesFor } from './candidate.ts';
+import { candidate, type Candidate, FEW_UNITS, PREFERENCE, seriesFor, type SharedSeries } from './candidate.ts';
 import { rowFor } from './code.ts';
 import { exactForms, type ExactForm } from './forms.ts';
 import type { Piece } from './pieces.ts';
 import { Scanner, type Side } from './region.ts';
+import { unproved } from './unproved.ts';
 import { settle, type Setting, signs } from './setting.ts';
 import type { Guarded, GuardProblem } from './types.ts';
-
-/** A plainer form is kept where others gain less than this. */
-const PREFERENCE = 1.4;
 
 export function guarded(problem: GuardProblem, budget: Budget): Guarded {
   const { function: f, variable, format, library, language } = problem;
@@ -24,7 +22,8 @@ export function guarded(problem: GuardProblem, budget: Budget): Guarded {
   if (!dependsOn(f, variable)) throw new Declined('bad-request', 'This expression does not depend on the variable; choose one that does.');
   const scanner = new Scanner(variable, { format, library }, budget);
   const setting = settle(problem, scanner);
-  const shared = seriesFor(problem, setting.sides, scanner, budget);
+  let series: SharedSeries | null | undefined;
+  const shared = (): SharedSeries | null => (series === undefined ? (series = seriesFor(problem, setting.sides, scanner, budget)) : series);
   const candidates: Candidate[] = [];
   const judge = (form: ExactForm): void => {
     const sides = parityOf(f, variable) && parityOf(form.tree, variable) && setting.symmetric ? setting.sides.slice(0, 1) : setting.sides;
@@ -41,15 +40,21 @@ export function guarded(problem: GuardProblem, budget: Budget): Guarded {
     if (!(error instanceof Declined && error.failure.code === 'over-budget' && candidates.length > 0)) throw error;
   }
   const best = chosen(candidates, problem);
-  if (!best) throw new Declined('undecided', `No form of this expression could be proved accurate on [${setting.text.join(', ')}] in ${format.name}; give a smaller "interval" that leaves out its other zeros and singular points.`);
-  const found = answer(best, candidates, problem, setting);
-  return problem.derivative ? { ...found, derivative: derivativeOf(found, setting, problem, budget) } : found;
+  if (!best) throw unproved(problem, setting, scanner, original);
+  const found = answer(best, candidates, problem, setting, scanner.grows);
+  if (!problem.derivative) return found;
+  const slope = derivativeOf(found, setting, problem, budget);
+  return typeof slope === 'string' ? { ...found, derivative: null, assumptions: [...found.assumptions, `no guard of the derivative: ${slope}`] } : { ...found, derivative: slope };
 }
 
-/** f' near the same point on the same interval, handed over at the same switch. */
-function derivativeOf(found: Guarded, setting: Setting, problem: GuardProblem, budget: Budget): Guarded | null {
+/** A guard of the derivative with a switch of its own is taken where the shared one loses this factor. */
+const SWITCH_COSTS = 4;
+
+/** f' near the same point on the same interval, handed over at the same switch where that serves it; the reason where it has no guard. */
+function derivativeOf(found: Guarded, setting: Setting, problem: GuardProblem, budget: Budget): Guarded | string {
   const slope = differentiate(problem.function, problem.variable);
-  if (!slope || !dependsOn(slope, problem.variable)) return null;
+  if (!slope) return 'its derivative is not known';
+  if (!dependsOn(slope, problem.variable)) return 'it is constant';
   const ends = setting.sides.map((s) => s.to && Q.add(s.point, Q.multiply(s.to, Q.rational(s.direction))));
   const starts = setting.sides.map((s) => Q.add(s.point, Q.multiply(s.from, Q.rational(s.direction))));
   const finite = ends.filter((e): e is Rational => e !== null);
@@ -57,12 +62,12 @@ function derivativeOf(found: Guarded, setting: Setting, problem: GuardProblem, b
   const open = (direction: 1 | -1): boolean => setting.sides.some((s) => s.direction === direction && s.to === null);
   const interval = { low: open(-1) ? null : (known[0] ?? null), high: open(1) ? null : (known.at(-1) ?? null) };
   const { derivative: _, ...rest } = problem;
-  try {
-    return guarded({ ...rest, function: slope, interval, intervalText: setting.text, name: ['guarded', 'derivative'], ...(found.switch && found.switch.den < 1n << 20n ? { switch: found.switch } : {}) }, budget);
-  } catch (error) {
-    if (error instanceof Declined) return null;
-    throw error;
-  }
+  const guardOf = (more: Pick<GuardProblem, 'switch'>): Outcome<Guarded> => attempt(() => guarded({ ...rest, function: slope, interval, intervalText: setting.text, name: ['guarded', 'derivative'], ...more }, budget));
+  const shared = found.switch && found.switch.den < 1n << 20n ? guardOf({ switch: found.switch }) : null;
+  if (shared?.ok && shared.value.bound.whole <= FEW_UNITS * 2 ** -problem.format.precision) return shared.value;
+  const own = guardOf({});
+  if (shared?.ok && (!own.ok || shared.value.bound.whole <= SWITCH_COSTS * own.value.bound.whole)) return shared.value;
+  return own.ok ? own.value : own.error.message;
 }
 
 /** Distances at which forms are compared before they are judged on the whole interval. */

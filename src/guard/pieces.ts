@@ -178,8 +178,10 @@ export class PieceModels {
     const { r, piece } = this;
     if (!Number.isFinite(relative) || !Number.isFinite(tiny)) return false;
     let most: Ball | null = real.upperEnd(real.absolute(model.range));
-    if (piece.kind === 'infinite' && model.valuation < 0) {
-      const growth = r.powerRational(r.fromRational(Q.divide(piece.farthest, piece.reach)), Q.rational(-model.valuation, this.#denominator));
+    if (piece.kind !== 'plain' && model.valuation < 0) {
+      if (this.#least === 0) return false;
+      const farthest = piece.kind === 'infinite' ? r.fromRational(Q.divide(piece.farthest, piece.reach)) : r.divide(r.one, real.fromDouble(piece.least));
+      const growth = farthest && r.powerRational(farthest, Q.rational(-model.valuation, this.#denominator));
       most = growth && r.multiply(most, growth);
     }
     if (!most) return false;

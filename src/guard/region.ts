@@ -87,15 +87,22 @@ export class Scanner {
     return part >= 2 ** -1022 ? part * (1 - 2 ** -50) : Math.max(0, part - 2 ** -1074);
   }
 
-  /** Where the value vanishes at the point, only distances at which it can be a normal number are promised anything. */
+  /** The value grows beyond all floats at the point, or with the argument: nothing is promised beyond half the largest one. */
+  grows = false;
+
+  /** Where the value vanishes at the point or grows without limit there, only distances at which it can be a normal number are promised anything. */
   #normalPart(form: Expression, piece: Piece, models: PieceModels, denominator: number): PieceModels {
     if (piece.kind === 'plain' || (piece.kind === 'near' && piece.least > 0)) return models;
     const model = models.of(form);
-    if (!model || model.valuation <= 0) return models;
-    const most = interval.size(interval.fromBall(model.range));
-    if (!(most > 0 && most < Infinity)) return models;
-    const { emin, precision } = this.machine.format;
-    const s = (2 ** emin * (precision < 20 ? 0.5 : 1 - 2 ** -10) / most) ** (1 / model.valuation) * (1 - 2 ** -30);
+    if (!model || model.valuation === 0) return models;
+    const box = interval.fromBall(model.range);
+    const [most, fewest] = [interval.size(box), interval.leastSize(box)];
+    const { emin, emax, precision } = this.machine.format;
+    const n = Math.abs(model.valuation);
+    if (model.valuation > 0 ? !(most > 0 && most < Infinity) : !(fewest > 0)) return models;
+    if (model.valuation < 0) this.grows = true;
+    // range * s^valuation at the smallest normal number, or at half the largest one.
+    const s = (model.valuation > 0 ? (2 ** emin * (precision < 20 ? 0.5 : 1 - 2 ** -10) / most) ** (1 / n) : fewest ** (1 / n) * 2 ** (-emax / n)) * (1 - 2 ** -30);
     const own = s ** denominator * (1 - 2 ** -30);
     const least = piece.kind === 'near' ? Math.max(own, this.#closest(piece)) : own;
     if (piece.kind === 'infinite') {

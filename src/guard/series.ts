@@ -30,8 +30,8 @@ const COEFFICIENT_BITS = 256;
 const MOST_POWER = 80;
 
 /** The first terms at the point, as far as they are whole powers with real coefficients of the format; null where the expansion is of another kind. `exact` where they are all there are. */
-export function seriesTerms(f: Expression, variable: string, point: Rational, count: number, { format }: Machine, budget: Budget): (SeriesTerms & { readonly exact: boolean }) | null {
-  const found = expand({ function: f, variable: build.symbol(variable), point: build.number(point), side: 'both', terms: count, assumptions: [] }, budget);
+export function seriesTerms(f: Expression, variable: string, { point, direction }: Pick<Side, 'point'> & { readonly direction: 1 | -1 | 'both' }, count: number, { format }: Machine, budget: Budget): (SeriesTerms & { readonly exact: boolean }) | null {
+  const found = expand({ function: f, variable: build.symbol(variable), point: build.number(point), side: direction === 'both' ? direction : direction > 0 ? 'right' : 'left', terms: count, assumptions: [] }, budget);
   if (!found.ok || found.value.prefactor || found.value.left || found.value.terms.length === 0 || found.value.divergent) return null;
   const powers: number[] = [];
   const coefficients: Rational[] = [];
@@ -45,7 +45,8 @@ export function seriesTerms(f: Expression, variable: string, point: Rational, co
     const rounded = value && roundToFormat(value, format.name);
     if (!rounded || Q.isZero(rounded)) break;
     powers.push(Number(power.num));
-    coefficients.push(rounded);
+    // The distance on the left is a - x.
+    coefficients.push(direction === -1 && power.num % 2n !== 0n ? Q.negate(rounded) : rounded);
     texts.push(toPlain(termTree(found.value, term)));
   }
   return powers.length === 0 ? null : { powers, coefficients, texts, exact: found.value.exact && powers.length === found.value.terms.length };

@@ -1,7 +1,8 @@
 /** Where a guard serves: the sides of its point that the interval has. */
 import { type Assumption, build, Q, type Rational } from '../expression/index.ts';
+import { ulp } from '../fit/index.ts';
 import { Declined } from '../outcome.ts';
-import { powerOfTwo } from '../write/index.ts';
+import { powerOfTwo, roundToFormat } from '../write/index.ts';
 import type { Scanner, Side } from './region.ts';
 import type { GuardProblem } from './types.ts';
 
@@ -27,9 +28,11 @@ export function settle(problem: GuardProblem, scanner: Scanner): Setting {
     return { sides: [side], symmetric: false, text, proposed: !given };
   }
   if (!given) return proposed(point, problem, scanner);
-  const { low, high } = given;
+  for (const end of [given.low, given.high]) if (end && Q.compare(Q.absolute(end), largest) > 0) throw new Declined('bad-request', `The interval reaches beyond the largest ${format.name} number; write inf for an end without limit.`);
+  const [low, high] = [inward(given.low, problem, 1), inward(given.high, problem, -1)];
   const text = problem.intervalText ?? [low ? Q.toText(low) : '-inf', high ? Q.toText(high) : 'inf'];
-  if (low && high && Q.compare(low, high) >= 0) throw new Declined('bad-request', 'The interval needs two different ends, the smaller one first.');
+  if (given.low && given.high && Q.compare(given.low, given.high) >= 0) throw new Declined('bad-request', 'The interval needs two different ends, the smaller one first.');
+  if (low && high && Q.compare(low, high) >= 0) throw new Declined('bad-request', Q.equal(low, high) ? `The interval holds only one ${format.name} number; give a wider one.` : `The interval holds no ${format.name} number; give a wider one.`);
   const distance = (end: Rational | null, direction: 1 | -1): Rational | null => end && Q.multiply(Q.subtract(end, point), Q.rational(direction));
   const sides: Side[] = [];
   const [right, left] = [distance(high, 1), distance(low, -1)];
@@ -38,8 +41,16 @@ export function settle(problem: GuardProblem, scanner: Scanner): Setting {
   if (right === null || right.num > 0n) sides.push({ point, direction: 1, from: rightFrom && rightFrom.num > 0n ? rightFrom : Q.ZERO, to: right });
   if (left === null || left.num > 0n) sides.push({ point, direction: -1, from: leftFrom && leftFrom.num > 0n ? leftFrom : Q.ZERO, to: left });
   const symmetric = sides.length === 2 && Q.isZero(point) && (right === null ? left === null : left !== null && Q.equal(right, left));
-  for (const end of [low, high]) if (end && Q.compare(Q.absolute(end), largest) > 0) throw new Declined('bad-request', `The interval reaches beyond the largest ${format.name} number; write inf for an end without limit.`);
   return { sides, symmetric, text, proposed: false };
+}
+
+/** The end of the interval as the arguments have it. A decimal or ratio stands for the float nearest to it, as a literal does; any other end for the first float from it on, in the given direction. */
+function inward(end: Rational | null, { format }: GuardProblem, direction: 1 | -1): Rational | null {
+  if (!end) return null;
+  if ((end.den & (end.den - 1n)) !== 0n) return roundToFormat(end, format.name);
+  const step = ulp(end, format);
+  const places = Q.multiply(Q.divide(end, step), Q.rational(-direction));
+  return Q.multiply(step, Q.multiply(Q.rational(Q.floor(places)), Q.rational(-direction)));
 }
 
 /** Where no interval is given: the distances up to 1 on the sides where the function is real, halved while it cannot be enclosed. */

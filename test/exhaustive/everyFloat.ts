@@ -16,6 +16,8 @@ export interface FloatRun {
    * known maximum errors of a few units of the 53rd bit ("Errors in Math Functions", from memory); 48 leaves a factor of 16.
    */
   readonly marginBits: number;
+  /** The function grows beyond all floats: nothing is looked at beyond half the largest one. */
+  readonly grows?: boolean;
 }
 
 export interface SeenErrors {
@@ -39,7 +41,7 @@ const UNITS = {
 } as const;
 
 /** The program prints: worst separate, its place, worst fused, its place, worst below the smallest normal number, floats. */
-function mainProgram({ reference, low, high, measure, marginBits }: FloatRun, every: number): string {
+function mainProgram({ reference, low, high, measure, marginBits, grows = false }: FloatRun, every: number): string {
   const below = measure === 'relative' ? 'if (fabs(f) < 0x1p-126) { const double a = fmax(fabs((double)s - f), fabs((double)m - f)); if (!(a <= small)) small = a; if (f == 0 && (s != 0 || m != 0)) small = INFINITY; return; }' : '';
   return `#include <float.h>
 #include <math.h>
@@ -52,6 +54,7 @@ static inline double reference(double x) { return ${reference}; }
 static double worst[2], small; static float where[2]; static unsigned long count;
 static inline void look(float x) {
   const double f = reference(x);
+  ${grows ? 'if (!(fabs(f) <= 0x1p127)) return;' : ''}
   const float s = emitted_separate(x), m = emitted_fused(x);
   count++;
   ${below}

@@ -14,6 +14,8 @@ export interface GuardCase {
   /** C expression in double `x` that loses at most a few bits to cancellation. */
   readonly reference: string;
   readonly tolerance?: string;
+  /** It has a pole in the interval. */
+  readonly grows?: boolean;
 }
 
 /** A series up to `limit`, where its first term left out is below 2^-46 of the sum, the function itself beyond. */
@@ -33,6 +35,10 @@ export const GUARDS: readonly GuardCase[] = [
   { text: '1 - sqrt(1 - x)', interval: ['-1', '1/2'], reference: 'x/(1 + sqrt(1 - x))' },
   { text: 'log(x)/(x - 1)', point: '1', interval: ['1/2', '2'], reference: 'x == 1 ? 1 : log1p(x - 1)/(x - 1)' },
   { text: 'acos(1 - x)', interval: ['0', '1'], reference: '2*asin(sqrt(x/2))' },
+  { text: 'exp(x)/x^2', interval: ['-1', '1'], reference: 'exp(x)/(x*x)', grows: true },
+  { text: '(exp(x) - 1)/x^2', interval: ['-1', '1'], reference: 'expm1(x)/(x*x)', grows: true },
+  { text: 'abs(x) - sin(x)', interval: ['0', '1'], reference: series('0.25', 'x*x*x*(1.0/6+x*x*(-1.0/120+x*x*(1.0/5040+x*x*(-1.0/362880+x*x*(1.0/39916800)))))', 'x - sin(x)') },
+  { text: 'x - sin(x)', interval: ['-1', '-1/1000'], reference: series('0.25', 'x*x*x*(1.0/6+x*x*(-1.0/120+x*x*(1.0/5040+x*x*(-1.0/362880+x*x*(1.0/39916800)))))', 'x - sin(x)') },
   { text: 'acosh(1 + x)', interval: ['0', '4'], reference: 'log1p(x + sqrt(x)*sqrt(x + 2))' },
 ];
 
@@ -57,4 +63,4 @@ export function guardOf(c: GuardCase, format = 'binary32', language = 'c'): Guar
   return found.value;
 }
 
-export const guardRunOf = (c: GuardCase, { code }: Guarded): FloatRun => ({ code, name: 'guarded', reference: c.reference, low: c.interval[0], high: c.interval[1], measure: 'relative', marginBits: 44 });
+export const guardRunOf = (c: GuardCase, { code }: Guarded): FloatRun => ({ code, name: 'guarded', reference: c.reference, low: c.interval[0], high: c.interval[1], measure: 'relative', marginBits: 44, ...(c.grows ? { grows: true } : {}) });

@@ -15,7 +15,7 @@ const gcc = has('gcc');
 if (!gcc) process.stderr.write('gcc is absent: emitted C is not run\n');
 
 describe('emitted guards over floats of the whole interval (every 400 009th; test/exhaustive/guards.ts runs all)', () => {
-  it.skipIf(!gcc).each(GUARDS.filter((_, k) => [0, 1, 4, 5, 7, 9, 11, 12, 13].includes(k)))('$text', (c) => {
+  it.skipIf(!gcc).each(GUARDS.filter((_, k) => [0, 1, 4, 5, 7, 9, 11, 12, 13, 14, 15, 16, 17].includes(k)))('$text', (c) => {
     const found = guardOf(c);
     const { worst, floats } = overFloats(guardRunOf(c, found), 400_009, hasFma());
     expect(floats).toBeGreaterThan(30);
@@ -80,6 +80,21 @@ describe('series branches', () => {
     expect(Number(found.derivative?.bound.whole)).toBeLessThan(1e-13);
     expect(found.derivative?.code).toContain('guarded_derivative');
   });
+  it('serves an interval that only comes near to the point', async () => {
+    const found = await answer({ text: 'x - sin(x)', language: 'c', interval: ['1e-10', '1/10'] });
+    expect(Number(found.bound.whole)).toBeLessThan(2e-15);
+    expect(found.switch).toBe('0.1');
+  });
+  it('the derivative has a switch of its own where the shared one does not serve it, or the reason why it has none', async () => {
+    const found = await answer({ text: '(1 - cos(x))/(x*x)', language: 'c', format: 'binary32', interval: ['-1', '1'], derivative: true });
+    expect(Number(found.derivative?.bound.whole)).toBeLessThan(1e-6);
+    expect((await answer({ text: '2*x', language: 'c', interval: ['-1', '1'], derivative: true })).assumptions.join()).toContain('no guard of the derivative: it is constant');
+  });
+  it('nothing is promised where the value is beyond half the largest number (1/x at the smallest arguments)', async () => {
+    const found = await answer({ text: '1/x', language: 'c', interval: ['-1', '1'] });
+    expect(found.assumptions.join()).toContain('beyond half the largest binary64 number');
+    expect((await answer({ text: '1/x', language: 'c', interval: ['1/2', '1'] })).assumptions.join()).not.toContain('beyond half');
+  });
   it('a larger library error is a larger bound', async () => {
     const [one, four] = [await answer({ text: '(exp(x)-1)/x', language: 'c' }), await answer({ text: '(exp(x)-1)/x', language: 'c', library: 4 })];
     expect(Number(four.bound.whole)).toBeGreaterThan(2 * Number(one.bound.whole));
@@ -104,6 +119,17 @@ describe('languages and errors', () => {
   ])('%o', async (request, code) => {
     const found = await ask({ ask: 'guard', ...request });
     expect(found.ok ? 'ok' : found.error.code).toBe(code);
+  });
+  it.each([
+    [{ text: '1/(x-1)-1/sin(x)', interval: ['-1', '2'] }, 'near x = 1 in binary64'],
+    [{ text: 'tan(x) - x', interval: ['-2', '2'] }, 'near x = 1.5707'],
+    [{ text: 'exp(x^2) - 1', interval: ['-30', '30'] }, 'beyond the largest binary64 number near x = 26.'],
+    [{ text: '(sin(x) - x)/x^3', interval: ['0', 'inf'] }, 'with a finite end'],
+    [{ text: 'sin(x)/x', interval: ['1', '1.00000001'], format: 'binary32' }, 'only one binary32 number'],
+    [{ text: 'sin(x)/x', interval: ['1.000000011', '1.000000012'], format: 'binary32' }, 'only one binary32 number'],
+  ])('the reason names the place: %o', async (request, says) => {
+    const found = await ask({ ask: 'guard', ...request });
+    expect(found.ok ? 'ok' : found.error.message).toContain(says);
   });
   it('the budget is kept', () => {
     const read = readExact('(1 - cos(x))/x^2');

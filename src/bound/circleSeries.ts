@@ -16,23 +16,23 @@ const cache = new Map<string, CircleSeries | null>();
 const CACHE_SIZE = 256;
 
 /** The first `length` coefficients about `centre`, f analytic on |d| <= radius in argument `index`; null where f cannot be enclosed there. */
-export function circleSeries(id: string, parameters: readonly ComplexBall[], index: number, centre: Ball, radius: number, precision: number, length: number): CircleSeries | null {
+export function circleSeries(id: string, parameters: readonly ComplexBall[], index: number, centre: Ball, radius: number, precision: number, length: number, check?: () => void): CircleSeries | null {
   const key = `${id}|${index}|${parameters.map((z) => `${z.re.mid},${z.re.rad},${z.re.exp},${z.im.mid}`).join(';')}|${centre.mid},${centre.rad},${centre.exp}|${radius}|${precision}`;
   const known = cache.get(key);
   if (known !== undefined && (known === null || known.coefficients.length >= length)) return known && { ...known, coefficients: known.coefficients.slice(0, length) };
-  const made = computeSeries(id, parameters, index, centre, radius, precision, length);
+  const made = computeSeries(id, parameters, index, centre, radius, precision, length, check);
   if (cache.size >= CACHE_SIZE) cache.clear();
   cache.set(key, made);
   return made;
 }
 
-function computeSeries(id: string, parameters: readonly ComplexBall[], index: number, centre: Ball, radius: number, precision: number, length: number): CircleSeries | null {
+function computeSeries(id: string, parameters: readonly ComplexBall[], index: number, centre: Ball, radius: number, precision: number, length: number, check?: () => void): CircleSeries | null {
   const f = describe(id)?.enclose;
   if (!f) return null;
   const at = (z: ComplexBall, bits: number): ComplexBall | null => {
     const args = [...parameters];
     args.splice(index, 0, z);
-    return f(args, bits);
+    return f(args, bits, check);
   };
   const bound = majorant(id, parameters, index, centre, radius) ?? maximumOnCircle(at, centre, radius);
   if (bound === null) return null;

@@ -54,7 +54,7 @@ export function logModelOf<T>(e: Expression, n: Numbers<T>, m: ModelArithmetic<T
       environment: symbols,
       vanishes: proof,
       check,
-      call: (id, args, models, isConstant) => envelopeModel(id, args, models, n, m) ?? besselSeriesModel(id, args, models, n, m) ?? kelvinSeriesModel(id, args, models, n, m) ?? lambertBranchModel(id, models, n, m) ?? specialModel(id, args, models, n, m, isConstant),
+      call: (id, args, models, isConstant) => envelopeModel(id, args, models, n, m) ?? besselSeriesModel(id, args, models, n, m) ?? kelvinSeriesModel(id, args, models, n, m) ?? lambertBranchModel(id, models, n, m) ?? specialModel(id, args, models, n, m, isConstant, check),
       rewrite: (id, args, models) => rewriteCall(id, args, models, n, m),
       integral: (node, beside) => parameterIntegral(node, beside, n, m, (body, around) => within(body, around)),
       simplify: (part) => (n.r.isPositive(leaf.range) ? normalForm(part, variable, '>') : n.r.isNegative(leaf.range) ? normalForm(part, variable, '<') : part),

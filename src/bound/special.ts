@@ -91,7 +91,7 @@ function roomOf(domain: Domain, centre: number): number {
 }
 
 /** The model of a described function of one varying argument at a regular point; null where its singularities are too near, or nothing is known of them. */
-export function specialModel<T>(id: string, args: readonly Expression[], models: readonly Model<T>[], n: Numbers<T>, m: ModelArithmetic<T>, isConstant: (e: Expression) => boolean): Model<T> | null {
+export function specialModel<T>(id: string, args: readonly Expression[], models: readonly Model<T>[], n: Numbers<T>, m: ModelArithmetic<T>, isConstant: (e: Expression) => boolean, check?: () => void): Model<T> | null {
   const { r } = n;
   const index = args.findIndex((arg) => !isConstant(arg));
   const argument = models[index];
@@ -140,7 +140,7 @@ export function specialModel<T>(id: string, args: readonly Expression[], models:
     const wanted = 2 ** Math.ceil(Math.log2(Math.max(factor * D, 0.25)));
     const radius = Math.min(domain.kind === 'entire' ? wanted : Math.max(factor * D, Math.min(0.5 * room, 4)), 0.97 * room);
     if (!(radius > 1.1 * D)) continue;
-    const series = circleSeries(id, parameters, index, ball, radius, precision, m.length);
+    const series = circleSeries(id, parameters, index, ball, radius, precision, m.length, check);
     if (series === null) continue;
     return composed(series, offset, D, n, m);
   }

@@ -2,7 +2,7 @@
  * Random bounds, each judged by 50 samples of |f - sum|: points of the interval, its ends, and a search around the largest. Functions of one real variable that MPFR has are taken from it
  * with 256 bits (gmp-wasm, development only), where the whole function is one call; all others from 256-bit balls, which test/rigorous and test/functions judge by MPFR.
  */
-import { build, type Expression, Q, type Rational, structureKey } from '../../src/expression/index.ts';
+import { build, dependsOn, type Expression, mapChildren, Q, type Rational, structureKey } from '../../src/expression/index.ts';
 import { boundRemainder, type Measure } from '../../src/bound/index.ts';
 import { expand, type Expansion, partialSum } from '../../src/expand/index.ts';
 import { describe } from '../../src/functions/index.ts';
@@ -121,15 +121,41 @@ export function randomSetting(random: () => number): Setting {
   return { f, point: number(Q.fromDouble(p)), terms, lower, upper: Q.compare(lower, upper) < 0 ? upper : Q.add(lower, Q.rational(1, 2)), measure };
 }
 
+/** A tree whose parts without x are named, with their enclosures: they are the same at every sample. */
+interface Prepared {
+  readonly tree: Expression;
+  readonly constants: ReadonlyMap<string, Ball>;
+}
+function prepared(tree: Expression): Prepared {
+  const constants = new Map<string, Ball>();
+  const named = (e: Expression): Expression => {
+    if (dependsOn(e, 'x')) return e.kind === 'symbol' ? e : mapChildren(e, named);
+    if (e.kind === 'number') return e;
+    const value = encloseReal(e, new Map(), BITS + 64, describe);
+    if (value === null) return e;
+    const name = `constant${constants.size}`;
+    constants.set(name, value);
+    return build.symbol(name);
+  };
+  return { tree: named(tree), constants };
+}
+const sums = new WeakMap<Expansion, Prepared>();
+function preparedSum(side: Expansion): Prepared {
+  const known = sums.get(side) ?? prepared(partialSum(side));
+  sums.set(side, known);
+  return known;
+}
+
 function remainderAt(expansion: Expansion, at: Rational, measure: Measure, mpfr: ((name: UnaryName, at: Ball) => Ball | null) | null): Ball | null {
   const point = expansion.point;
   const onLeft = point !== 'inf' && point !== '-inf' && point.kind === 'number' && Q.compare(at, point.value) < 0;
   const side = onLeft && expansion.left ? expansion.left : expansion;
   const environment = new Map([['x', real.fromRational(at, BITS + 64)]]);
+  const own = preparedSum(side);
   const name = mpfrName(side.function);
   // Only arguments that MPFR can be given exactly.
   const exact = at.den > 0n && (at.den & (at.den - 1n)) === 0n;
-  const [f, s] = [name && mpfr && exact ? mpfr(name, real.fromRational(at, 4096)) : encloseReal(side.function, environment, BITS, describe), encloseReal(partialSum(side), environment, BITS, describe)];
+  const [f, s] = [name && mpfr && exact ? mpfr(name, real.fromRational(at, 4096)) : encloseReal(side.function, environment, BITS, describe), encloseReal(own.tree, new Map([...environment, ...own.constants]), BITS, describe)];
   if (f === null || s === null) return null;
   const difference = real.subtract(f, s, BITS);
   return measure === 'absolute' ? real.absolute(difference) : real.divide(real.absolute(difference), real.absolute(f), BITS);

@@ -27,8 +27,9 @@ const inHalf = <T>(kit: Kit<T>, z: T): boolean => real.isPositive(kit.realPart(z
 function erf<T>(kit: Kit<T>, z: T): T | null {
   const { a } = kit;
   if (a.isZero(z)) return z;
-  if (kit.isReal && bound.exponent(kit.size(z)) > 3 && !real.containsZero(kit.realPart(z))) {
-    const tail = erfc(kit, real.isPositive(kit.realPart(z)) ? z : a.negate(z));
+  if (bound.exponent(kit.size(z)) > 3 && !real.containsZero(kit.realPart(z))) {
+    const right = real.isPositive(kit.realPart(z)) ? z : a.negate(z);
+    const tail = kit.isReal ? erfc(kit, right) : erfcFar(kit, right);
     if (tail !== null) return real.isPositive(kit.realPart(z)) ? a.subtract(a.one, tail) : a.subtract(tail, a.one);
   }
   const square = a.square(z);

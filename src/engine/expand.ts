@@ -77,6 +77,7 @@ function rootOf(request: ExpandRequest, source: SourceFormula, run: Run, time: B
   const name = request.unknown ?? source.unknown ?? '';
   const unknown = source.readSymbol(name);
   if (!unknown.ok) return failure('bad-request', `The unknown "${name}" cannot be read: ${unknown.error.message}`);
+  if (source.expression.kind === 'relation' && source.expression.relations.some((r) => /^(?:[<>]=?|!=|ll|gg|propto)$/.test(r))) return failure('bad-request', 'An unknown is solved for in an equation; write an equals sign between its two sides.');
   const equation = equationOf(source.expression);
   const variable = variableOf(request, equation, { ...source, unknown: unknown.value.kind === 'symbol' ? unknown.value.name : name });
   if (!variable.ok) return variable;

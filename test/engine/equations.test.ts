@@ -21,5 +21,9 @@ describe('equations without derivatives', () => {
     ["y(t+\\tau) = y(t) + \\tau y'(t)", '\\tau', 'y(t) + y′(t)·τ + O(τ²)'],
   ])('a difference formula: %s', async (text, variable, expected) => expect(await answered(text, variable)).toEqual({ text: expected, replaced: false }));
   it('the unknown that the text names before its equation is solved for', async () => expect(await answered('y:\\ \\tan y = 2 \\tan x')).toEqual({ text: '2x − 2x³ + O(x⁵)', replaced: false }));
+  it.each(['y < x + y^2', 'y \\ge x + y^2', 'y \\ll x'])('an inequality has no root: %s', async (text) => {
+    const answer = await ask({ ask: 'expand', language: 'latex', text, variable: 'x', unknown: 'y' });
+    expect(answer.ok ? '' : answer.error.code).toBe('bad-request');
+  });
   it.each(['\\tan x = 2 \\sin x', '\\sin x - x\\cos x = 0', '\\tan x = \\frac{v^2}{r g}'])('an equation to be simplified in place: %s', async (text) => expect((await answered(text)).replaced).toBe(true));
 });

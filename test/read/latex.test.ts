@@ -10,6 +10,14 @@ const reading = (text: string, options: ReadOptions = {}): string => {
 };
 
 const TABLE: readonly (readonly [string, string])[] = [
+  // Exponents between a function's name and its argument (common practice): -1 is the inverse function.
+  ['\\Phi^{-1}(p)', '@\\Phi^{-1}<0>(p)'],
+  ['\\Phi^{-1}(1-p)', '@\\Phi^{-1}<0>((1 + -p))'],
+  ['f^{-1}(x)', '@f^{-1}<0>(x)'],
+  ['\\phi^2(t)', '@\\phi<0>(t)^2'],
+  ['x(t) + x^2(t)', '(@x<0>(t) + @x<0>(t)^2)'],
+  ['x^2(t+1)', '[x^2 (t + 1)]'],
+  ['a^{-1}(1+x)', '[a^-1 (1 + x)]'],
   // Fractions, roots, powers.
   ['\\frac12', '{1 / 2}'],
   ['\\tfrac13x^3', '[{1 / 3} x^3]'],

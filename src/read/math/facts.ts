@@ -10,6 +10,8 @@ export interface NameFacts {
   readonly differentiated: ReadonlySet<string>;
   /** The text shows a truncated expansion: dots, O, an approximation sign. */
   readonly truncated: boolean;
+  /** Stand somewhere before a single name in brackets. */
+  readonly applied: ReadonlySet<string>;
   /** Stand somewhere without brackets behind them. */
   readonly bare: ReadonlySet<string>;
   /** Single letters of plain text that stand alone somewhere, so that a run of them is a product. */
@@ -25,6 +27,9 @@ export interface NameFacts {
   readonly indices: ReadonlySet<string>;
 }
 
+/** Letters that name functions where an argument follows an exponent. */
+export const FUNCTION_LETTER = /^(?:[fFgG]|\\(?:phi|varphi|psi|Phi|Psi))$/;
+
 export const isName = (t: Token | undefined): boolean => t !== undefined && (t.kind === 'letter' || t.kind === 'word' || (t.kind === 'command' && GREEK.has(t.text)));
 /** The spelling of a name token: `x`, `\alpha`. `\varepsilon` is `\epsilon`. */
 export function nameText(t: Token): string {
@@ -35,6 +40,7 @@ export function nameText(t: Token): string {
 export function gatherFacts(tokens: readonly Token[], match: Int32Array): NameFacts {
   const surelyFunctions = new Set<string>();
   const differentiated = new Set<string>();
+  const applied = new Set<string>();
   const bare = new Set<string>();
   const alone = new Set<string>();
   const indices = new Set<string>();
@@ -90,6 +96,7 @@ export function gatherFacts(tokens: readonly Token[], match: Int32Array): NameFa
     const bracket = is(k, '(') || is(k, '[');
     if (primes) surelyFunctions.add(full);
     if (bracket) {
+      if (match[k] === k + 2 && isName(token(k + 1))) applied.add(full);
       const close = match[k] ?? -1;
       let inner = k + 1;
       if (isOneVector(tokens, match, inner, close)) surelyFunctions.add(full);
@@ -103,7 +110,7 @@ export function gatherFacts(tokens: readonly Token[], match: Int32Array): NameFa
           break;
         }
       }
-    } else if (!primes && !raisedBeforeArgument(tokens, match, k)) bare.add(full);
+    } else if (!primes && !raisedBeforeArgument(tokens, match, k, name)) bare.add(full);
     const before = token(i - 1);
     if (before?.kind === 'command' && before.text === 'partial' && !is(i + 1, '^')) {
       // `\partial E_n` in a numerator: E_n is differentiated. Denominators hold variables.
@@ -137,15 +144,16 @@ export function gatherFacts(tokens: readonly Token[], match: Int32Array): NameFa
   const eulerNumber = variableExponent || eulerByUse || (!bareE && sawEPower && !(plainSquareOnly && !words));
   const truncated = tokens.some((t, i) => (t.kind === 'command' && /^(?:[cl]?dots.?|approx|sim|simeq|mathcal|order)$/.test(t.text)) || t.text === '...' || (/^[Oo]$/.test(t.text) && tokens[i + 1]?.text === '('));
   const infix = tokens.some((t) => t.kind === 'command' && (t.text === 'over' || t.text === 'choose'));
-  return { infix, surelyFunctions, differentiated, truncated, bare, alone, eulerNumber, imaginary: jInExponent ? 'j' : iBound || (iIndex && !iInExponent) ? null : 'i', dotProducts, indices };
+  return { infix, surelyFunctions, differentiated, truncated, applied, bare, alone, eulerNumber, imaginary: jInExponent ? 'j' : iBound || (iIndex && !iInExponent) ? null : 'i', dotProducts, indices };
 }
 
 /** `^2(t)`: a power of the value of a function, where its argument is one letter. */
-function raisedBeforeArgument(tokens: readonly Token[], match: Int32Array, at: number): boolean {
+function raisedBeforeArgument(tokens: readonly Token[], match: Int32Array, at: number, name: string): boolean {
   if (tokens[at]?.text !== '^' || tokens[at]?.kind !== 'mark') return false;
   const first = tokens[at + 1];
   const after = first?.kind === 'open' ? (match[at + 1] ?? -1) + 1 : at + 2;
-  return tokens[after]?.text === '(' && match[after] === after + 2 && isName(tokens[after + 1]);
+  if (tokens[after]?.text !== '(') return false;
+  return (match[after] === after + 2 && isName(tokens[after + 1])) || (FUNCTION_LETTER.test(name) && exponentText(tokens, match, at + 1) === '-1');
 }
 
 /** The token alone is the denominator of a fraction whose numerator is one token: `\frac ne`, `\frac1{e}`. */

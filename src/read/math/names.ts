@@ -6,6 +6,7 @@ import { resolve, wordName } from './functionNames.ts';
 import { exponentOf, smallText } from './grammar.ts';
 import { applyKnown, bracketArguments, ofMatrix } from './calls.ts';
 import { indexExpression, letterFunction } from './letterFunctions.ts';
+import { raisedFunction } from './raisedFunctions.ts';
 import { fail, isMark, next, node, peek, type State, within } from './state.ts';
 import { GREEK } from './unicode.ts';
 import { type Token, Unreadable } from './tokens.ts';
@@ -115,6 +116,8 @@ export function name(p: State): Expression {
   if (index !== '' && primes === 0 && /^\\gamma_(?:E|\{EM\}|\{\\mathrm\{E\}\})$/.test(full) && !p.options.symbols.has(full)) return node(p, from, build.constant('eulerGamma'));
   const special = label !== '' || p.options.symbols.has(full) || p.options.functions.has(full) ? null : letterFunction(p, from, base, index, primes);
   if (special) return special;
+  const raised = label === '' && primes === 0 ? raisedFunction(p, from, base, index, () => applies(p, base, index, 0)) : null;
+  if (raised) return raised;
   const bracket = peek(p);
   if (isMark(bracket, '(', '[') && applies(p, base, index, primes)) {
     const args = bracketArguments(p);

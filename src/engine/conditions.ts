@@ -1,6 +1,8 @@
 /** What the words and formulas behind an expression (`, \quad a > 0`, `c - a - b = \tfrac12`, `x \to 0`) say about its parameters. */
 import { type Assumption, build, dependsOn, type Expression, freeSymbols, substitute } from '../expression/index.ts';
+import { type Outcome, success } from '../outcome.ts';
 import { toPlain } from '../write/index.ts';
+import { readAllAssumptions } from './assumptions.ts';
 
 const ORDERED = ['<', '<=', '>', '>=', '!='] as const;
 type Ordered = (typeof ORDERED)[number];
@@ -61,6 +63,17 @@ function termsOf(e: Expression, negative: boolean): readonly { readonly negative
 
 /** Puts the determined symbols in. */
 export const withValues = (e: Expression, { values }: StatedConditions): Expression => [...values].reduce((tree, [name, value]) => substitute(tree, name, value), e);
+
+/** A function for a program needs numbers: symbols that assumptions such as `a = 2` determine, put in, and those assumptions. The variable is none of them. */
+export function withAssumedNumbers(e: Expression, texts: readonly string[] | undefined, variable: string | undefined): Outcome<{ readonly function: Expression; readonly used: readonly string[] }> {
+  const assumed = readAllAssumptions(texts);
+  if (!assumed.ok) return assumed;
+  const equations = assumed.value.flatMap((a): Expression[] => (a.kind === 'relation' && a.relation === '=' ? [{ kind: 'relation', sides: [a.left, a.right], relations: ['='] }] : []));
+  const stated = statedConditions(equations, build.symbol(variable ?? ''));
+  const { values } = stated;
+  const known = [...values].filter(([name]) => dependsOn(e, name));
+  return success({ function: withValues(e, stated), used: known.map(([name, value]) => `${name} = ${toPlain(value)}`) });
+}
 
 /** The target of `y \to 0` among the conditions, for a symbol. */
 export function targetOf(conditions: readonly Expression[], symbol: Expression): Expression | null {

@@ -9,6 +9,7 @@ import type { CoefficientAnswer, ExpandRequest, FitAnswer, FitPieceAnswer, FitRe
 import { codeLanguage as isCode, readExact } from '../read/index.ts';
 import { encloseReal, real } from '../rigorous/index.ts';
 import { hexFloat, shortestDecimal, toPlain } from '../write/index.ts';
+import { withAssumedNumbers } from './conditions.ts';
 import { filledConstants, sourceOf } from './constants.ts';
 import { fitPlot } from './fitPlot.ts';
 import { functionOf, variableOf } from './question.ts';
@@ -27,14 +28,16 @@ const COMPARISON_SHARE = 0.8;
 export async function askFit(request: FitRequest, tools: EngineTools, time: Budget): Promise<Outcome<FitAnswer>> {
   const source = await sourceOf(request, tools, 'values');
   if (!source.ok) return source;
-  const target = functionOf(source.value.expression);
+  const filled = withAssumedNumbers(functionOf(source.value.expression), request.assume, request.variable);
+  if (!filled.ok) return filled;
+  const target = filled.value.function;
   const variable = variableIn(request, target, source.value);
   if (!variable.ok) return variable;
   const problem = problemOf(request, target, variable.value, source.value);
   if (!problem.ok) return problem;
   const found = fit(problem.value, time);
   if (!found.ok) return found;
-  return success(answerOf(found.value, problem.value, request, filledConstants(source.value), time));
+  return success(answerOf(found.value, problem.value, request, [...filledConstants(source.value), ...filled.value.used], time));
 }
 
 function variableIn(request: FitRequest, target: Expression, source: SourceFormula): Outcome<string> {

@@ -8,6 +8,7 @@ import type { ExpandRequest, GuardAnswer, GuardRequest } from '../protocol.ts';
 import { codeLanguage as isCode, readExact } from '../read/index.ts';
 import { encloseReal, real } from '../rigorous/index.ts';
 import { codeLanguage, shortestDecimal, toPlain } from '../write/index.ts';
+import { withAssumedNumbers } from './conditions.ts';
 import { filledConstants, sourceOf } from './constants.ts';
 import { libraryPrefix } from './insertion.ts';
 import { functionOf, type Point, readPoint, variableOf } from './question.ts';
@@ -21,7 +22,9 @@ const END_BITS = 192;
 export async function askGuard(request: GuardRequest, tools: EngineTools, time: Budget): Promise<Outcome<GuardAnswer>> {
   const source = await sourceOf(request, tools, 'values');
   if (!source.ok) return source;
-  const target = functionOf(source.value.expression);
+  const filled = withAssumedNumbers(functionOf(source.value.expression), request.assume, request.variable);
+  if (!filled.ok) return filled;
+  const target = filled.value.function;
   const place = placeOf(request, target, source.value);
   if (!place.ok) return place;
   const problem = problemOf(request, target, place.value, source.value);
@@ -29,7 +32,7 @@ export async function askGuard(request: GuardRequest, tools: EngineTools, time: 
   const found = guard(problem.value, time);
   if (!found.ok) return found;
   const answer = answerOf(found.value, problem.value);
-  return success({ ...answer, assumptions: [...filledConstants(source.value), ...answer.assumptions] });
+  return success({ ...answer, assumptions: [...filledConstants(source.value), ...filled.value.used, ...answer.assumptions] });
 }
 
 function placeOf(request: GuardRequest, target: Expression, source: SourceFormula): Outcome<{ readonly variable: string; readonly point: Rational | 'inf' | '-inf' }> {

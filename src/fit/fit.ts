@@ -2,7 +2,7 @@
 import { build, type Expression, Q, type Rational } from '../expression/index.ts';
 import { attempt, budget as newBudget, type Budget, Declined, type Outcome } from '../outcome.ts';
 import { real } from '../rigorous/index.ts';
-import { codeLanguage, type PolynomialTerm, type Statement, toPlain } from '../write/index.ts';
+import { codeLanguage, parameterIn, type PolynomialTerm, type Statement, toPlain } from '../write/index.ts';
 import { codeFormat, type FitCodeText, fitCode, functionName, fusing, machineArithmetic, type ParameterRange, rowFor, wholeFunction } from './code.ts';
 import { fixedCode, requireIntegers } from './fixedCode.ts';
 import { fitFixedPoint } from './fixedFit.ts';
@@ -151,9 +151,9 @@ function pair(problem: FitProblem, second: SecondVariable, whole: PolynomialProb
   if (!found || ![problem.variable, second.variable].every((v) => found.variables.includes(v))) throw new Declined('bad-request', 'Functions of two variables are fitted for hypot(x, y), sqrt(x^2 + y^2) and atan2(y, x); give values for the other symbols.');
   if (whole.method !== 'minimax' || problem.reduction === 'none' || problem.pieces !== 1 || problem.result === 'expression' || (whole.format.name !== 'binary32' && whole.format.name !== 'binary64')) throw new Declined('bad-request', 'Functions of two variables are fitted by reduction, as one function in binary32 or binary64; leave method, reduction, pieces and result out.');
   const boxes = found.variables.map((v) => (v === problem.variable ? { low: problem.low, high: problem.high } : { low: second.low, high: second.high }));
-  const names = found.variables.map((v) => (/^[A-Za-z][A-Za-z0-9]*$/.test(v) && !rowFor(problem.language).reserved.includes(v) && !PAIR_LOCALS.includes(v) ? v : null));
+  const names = found.variables.map((v) => parameterIn(v, rowFor(problem.language))).map((v) => (/^[A-Za-z][A-Za-z0-9]*$/.test(v) && !rowFor(problem.language).reserved.includes(v) && !PAIR_LOCALS.includes(v) ? v : null));
   const [a, b] = boxes;
-  const [first, other] = names.every((n) => n !== null) ? names : found.kind === 'hypot' ? ['x', 'y'] : ['y', 'x'];
+  const [first, other] = names.every((n) => n !== null) && names[0] !== names[1] ? names : found.kind === 'hypot' ? ['x', 'y'] : ['y', 'x'];
   if (!a || !b || !first || !other) throw new RangeError('two variables');
   const reduced = reducePair({ kind: found.kind, whole, row: rowFor(problem.language), parameters: [first, other], boxes: [a, b] }, budget);
   return { ...reducedFit(problem, [first, other], whole, reduced, written, found.kind), arguments: found.variables };
@@ -217,7 +217,10 @@ function plain(problem: FitProblem, whole: PolynomialProblem, written: FloatForm
 }
 
 /** The variable where it is an identifier of the language, else x. */
-const parameterName = ({ variable, language }: FitProblem): string => (/^[A-Za-z][A-Za-z0-9]*$/.test(variable) && !rowFor(language).reserved.includes(variable) ? variable : 'x');
+function parameterName({ variable, language }: FitProblem): string {
+  const name = parameterIn(variable, rowFor(language));
+  return /^[A-Za-z][A-Za-z0-9]*$/.test(name) && !rowFor(language).reserved.includes(name) ? name : 'x';
+}
 
 function rational(problem: FitProblem, shared: PolynomialProblem, format: FloatFormat, budget: Budget): Fit {
   if (problem.pieces !== 1) throw new Declined('bad-request', 'Rational functions are fitted on one interval; ask for each piece by itself.');

@@ -9,7 +9,7 @@ import { binaryExponent, type FloatFormat, isRepresentable, powerOfTwo, roundTo 
 import { shiftedResidual } from './grid.ts';
 import { type Arithmetic, canStandApart, polynomialProgram, type Program, twoWordProgram } from './program.ts';
 import { certifiedBeside, certifiedTerms, type CertifiedPolynomial, errorParts, type EvaluationProof, type FitMeasure, type InheritedError, type ProofProblem, type ProvedError, proveProgram } from './proof.ts';
-import { type Basis, basisFor, bestOfDegree, type Found, leastDegree, leastWithin, nextDegree, type Search } from './search.ts';
+import { type Basis, basisFor, bestOfDegree, errorOf, type Found, leastDegree, leastWithin, MOST_DEGREE, nextDegree, type Search } from './search.ts';
 import { type FitTarget, prepareKept, prepareTarget } from './target.ts';
 import { economizedOfDegree, taylorOfDegree, taylorWithin } from './truncated.ts';
 
@@ -99,6 +99,7 @@ function about(centre: Rational, problem: PolynomialProblem, budget: Budget): Po
   const setting: Setting = { problem, search, proof: proofProblem(problem, search) };
   if (problem.degree !== undefined) {
     const degree = Math.max(problem.degree, leastDegree(search));
+    if (method === 'minimax' && degree > MODERATE_DEGREE) requireUse(search, degree, problem, budget);
     const found = method === 'taylor' ? taylorOfDegree(search, degree, budget) : method === 'economized' ? economizedOfDegree(search, degree, budget) : bestOfDegree(search, degree, budget);
     if (!found) throw new Declined('undecided', 'No best polynomial of this degree was found on this interval; take a smaller interval or another degree.');
     return finished(setting, candidate(setting, found, budget), budget);
@@ -122,6 +123,18 @@ function about(centre: Rational, problem: PolynomialProblem, budget: Budget): Po
   }
   const reached = Q.toDouble(best?.proof.total ?? Q.ONE).toExponential(2);
   throw new Declined('bad-request', `Rounding in ${format.name} takes this tolerance away: the smallest proven error is ${reached}; allow a larger tolerance or a wider format.`);
+}
+
+/** Degrees above it are asked whether the format has any use for them. */
+const MODERATE_DEGREE = 24;
+
+/** Declines a degree whose last terms are nothing beside the rounding of the first ones, or beyond what is fitted. */
+function requireUse(search: Search, degree: number, { format, measure }: PolynomialProblem, budget: Budget): void {
+  const lowest = measure === 'absolute' ? bestOfDegree(search, leastDegree(search), budget) : null;
+  const scale = lowest ? errorOf(lowest) : Q.ONE;
+  const enough = leastWithin(search, Q.multiply(scale, powerOfTwo(-2 * format.precision)), budget);
+  if (enough && enough.degree < degree) throw new Declined('bad-request', `Degree ${enough.degree} is already far below what ${format.name} can resolve on this interval; ask for that degree or less.`);
+  if (degree > MOST_DEGREE) throw new Declined('bad-request', `Polynomials are fitted up to degree ${MOST_DEGREE}; split the interval or ask for a lower degree.`);
 }
 
 function keptTarget(problem: PolynomialProblem, count: number, budget: Budget): FitTarget {

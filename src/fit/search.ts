@@ -101,7 +101,7 @@ export function bestOfDegree(search: Search, degree: number, budget: Budget): Fo
   return result && { problem, result, degree };
 }
 
-const MOST_DEGREE = 160;
+export const MOST_DEGREE = 160;
 
 /** The least degree whose best error is within `goal`; null where none up to 160 is. Steps double until one is, then halve. */
 export function leastWithin(search: Search, goal: Rational, budget: Budget): Found | null {

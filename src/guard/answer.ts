@@ -16,6 +16,7 @@ export function answer(best: Candidate, candidates: readonly Candidate[], proble
     `each library call is within ${library} ulp; square roots are correctly rounded`,
     'holds with and without fusing of products and sums (a*b + c)',
     `where the value is below the smallest normal ${format.name} number the relative bound does not apply`,
+    ...(language === 'glsl' || language === 'hlsl' ? ['the device rounds additions, multiplications, divisions and square roots correctly'] : []),
     ...(grows ? [`nor where the value is beyond half the largest ${format.name} number`] : []),
   ];
   const written = guardCode({

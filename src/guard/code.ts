@@ -2,7 +2,7 @@
 import { build, children, dependsOn, type Expression, mapChildren, Q, type Rational, structureKey } from '../expression/index.ts';
 import { type FloatFormat, wrapCode } from '../fit/index.ts';
 import { Declined } from '../outcome.ts';
-import { codeLanguage, commentLines, functionCode, type LanguageRow, type Statement } from '../write/index.ts';
+import { codeLanguage, commentLines, functionCode, type LanguageRow, parameterIn, type Statement } from '../write/index.ts';
 import type { SeriesForm } from './series.ts';
 
 export interface GuardCode {
@@ -33,7 +33,7 @@ function functionName(words: readonly string[], row: LanguageRow): string {
 /** An identifier of the language for the symbol. */
 export function identifierFor(symbol: string, row: LanguageRow): string {
   const plain = symbol.replace(/^\\/, '').replace(/[^A-Za-z0-9_]/g, '_').replace(/^_+|_+$/g, '');
-  const name = /^[A-Za-z]\w*$/.test(plain) ? plain : 'x';
+  const name = parameterIn(/^[A-Za-z]\w*$/.test(plain) ? plain : 'x', row);
   return row.reserved.includes(name) ? `${name}_` : name;
 }
 

@@ -22,7 +22,7 @@ export interface CommentFacts {
 
 export function commentOf(facts: CommentFacts): string[] {
   const branches =
-    facts.series !== null && facts.switchText !== null ? ` (${decimal(facts.series)} within ${facts.switchText} of the point, by ${facts.terms} ${facts.terms === 1 ? 'term' : 'terms'} of the series; ${decimal(facts.direct ?? 0)} beyond)` : '';
+    facts.series !== null && facts.switchText !== null ? ` (${decimal(facts.series)} within ${facts.switchText} of the point, by ${facts.terms} ${facts.terms === 1 ? 'term' : 'terms'} of the series${facts.direct === null ? '' : `; ${decimal(facts.direct)} beyond`})` : '';
   return [
     `${toPlain(facts.function)} for ${facts.variable.replace(/\\/g, '')} in [${facts.interval.join(', ')}], ${facts.format.name}.`,
     `Proven for every ${facts.format.name} argument in the interval, evaluation included: relative error at most ${decimal(facts.whole)}${branches}.`,

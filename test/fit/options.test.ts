@@ -64,3 +64,19 @@ describe('an assertion of the range', () => {
     expect(() => run(answer.code, [0.34])).toThrow();
   });
 });
+
+describe('degrees without use', () => {
+  it.each([
+    [{ text: 'exp(x)', degree: 200 }, /Degree 24 is already far below what binary64 can resolve/],
+    [{ text: 'sin(x)', degree: 61, measure: 'relative' }, /already far below/],
+    [{ text: '1/(1+25*x^2)', degree: 200 }, /up to degree 160/],
+  ])('%o is declined early', async (request, says) => {
+    const answer = await ask({ interval: ['-1', '1'], budget_ms: 20_000, ...request });
+    expect(answer.ok ? '' : answer.error.message).toMatch(says);
+  });
+  it('Fortran: what a function uses is named inside it, and an assumed value is put in', async () => {
+    const found = await fitAnswer({ text: 'sin(a*U)', variable: 'U', assume: ['a = 2'], interval: ['-1/4', '1/4'], degree: 5, contraction: 'fma', emit: 'fortran', format: 'binary64' });
+    expect(found.code).toMatch(/function \w+\(x\) result\(value\)\n +use, intrinsic :: ieee_arithmetic, only: ieee_fma\n +double precision, intent\(in\) :: x/);
+    expect(found.assumptions).toContain('a = 2');
+  });
+});

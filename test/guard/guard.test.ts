@@ -95,6 +95,11 @@ describe('series branches', () => {
     expect(found.assumptions.join()).toContain('beyond half the largest binary64 number');
     expect((await answer({ text: '1/x', language: 'c', interval: ['1/2', '1'] })).assumptions.join()).not.toContain('beyond half');
   });
+  it('an assumption that gives a parameter its value is used and said', async () => {
+    const found = await answer({ text: 'exp(a*x) - 1', assume: ['a = 2'], interval: ['-1', '1'] });
+    expect(found.code).toContain('expm1');
+    expect(found.assumptions).toContain('a = 2');
+  });
   it('a larger library error is a larger bound', async () => {
     const [one, four] = [await answer({ text: '(exp(x)-1)/x', language: 'c' }), await answer({ text: '(exp(x)-1)/x', language: 'c', library: 4 })];
     expect(Number(four.bound.whole)).toBeGreaterThan(2 * Number(one.bound.whole));
@@ -103,6 +108,10 @@ describe('series branches', () => {
 });
 
 describe('languages and errors', () => {
+  it('Fortran tells no capitals apart: no two names of a function are one (Fortran 2018, 6.1.2, from memory)', async () => {
+    expect((await answer({ text: 'Value - sin(Value)', language: 'fortran', interval: ['-1', '1'] })).code).toContain('function guarded(value_) result(value)');
+    expect((await answer({ text: 'U - sin(U)', language: 'fortran', interval: ['-1', '1'] })).code).toContain('function guarded(x) result(value)');
+  });
   it('Rust methods and numpy calls', async () => {
     expect((await answer({ text: '(x.exp() - 1.0) / x', language: 'rust' })).code).toContain('x.exp_m1()/x');
     const numpy = await answer({ text: 'np.sqrt(1 + x**2) - 1', language: 'python' });

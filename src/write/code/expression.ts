@@ -3,7 +3,7 @@ import { build, Q, type Expression, type Rational } from '../../expression/index
 import { codeWriting, describe } from '../../functions/index.ts';
 import { attempt, Declined, type Outcome } from '../../outcome.ts';
 import { isRepresentable, type FloatFormat } from '../float.ts';
-import { splitSign } from '../layout.ts';
+import { splitSign } from '../factors.ts';
 import { Binding, type Piece } from '../linear.ts';
 import { identifierOf } from '../symbols.ts';
 import { type BinaryCall, binaryCall, isBinaryCall } from './binary.ts';

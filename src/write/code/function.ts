@@ -85,14 +85,19 @@ export function functionCode(text: FunctionText, options: CodeOptions): Outcome<
     const { row, format } = writer;
     const type = row.floats[format]?.name ?? '';
     const shape = SHAPES[row.id];
-    const lines = [...commentLines(row.id, text.comment ?? []), ...shape.head(text.name, text.parameters, type)];
+    const comment = commentLines(row.id, text.comment ?? []);
+    const lines = [...comment, ...shape.head(text.name, text.parameters, type)];
+    const opening = comment.length + 1;
     if (row.id === 'fortran') {
       const names = declared(text.body);
       if (names.length > 0) lines.push(`    ${type} :: ${names.join(', ')}`);
     }
     writeStatements(text.body, writer, shape, type, shape.indent, lines, text.name);
     lines.push(...shape.foot(text.name));
-    return { text: lines.join('\n'), imports: [...writer.imports] };
+    if (row.id !== 'fortran') return { text: lines.join('\n'), imports: [...writer.imports] };
+    // A use statement stands inside its program unit, before every declaration.
+    const within = [...lines.slice(0, opening), ...[...writer.imports].map((line) => shape.indent + line), ...lines.slice(opening)];
+    return { text: within.join('\n'), imports: [] };
   });
 }
 

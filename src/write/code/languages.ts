@@ -159,7 +159,7 @@ export const LANGUAGES: Readonly<Record<CodeLanguage, LanguageRow>> = {
     powerOperator: '**', integersMix: false, comment: { line: '!' }, constants: {},
     fma: fused('ieee_fma', ['use, intrinsic :: ieee_arithmetic, only: ieee_fma']),
     choose: (c, a, b) => `merge(${a}, ${b}, ${c})`, notEqual: '/=',
-    reserved: [],
+    reserved: words('value'),
   },
   matlab: {
     id: 'matlab', title: 'MATLAB', family: 'matlab',
@@ -223,6 +223,9 @@ const ALIASES: Readonly<Record<string, CodeLanguage>> = {
   'fortran-modern': 'fortran', 'fortran-fixed-form': 'fortran', FortranFreeForm: 'fortran', FortranFixedForm: 'fortran', fortran_free: 'fortran', 'fortran_fixed-form': 'fortran',
   octave: 'matlab', shaderlab: 'hlsl', 'jupyter-python': 'python', ipynb: 'python',
 };
+
+/** A name as a parameter of the language: in Fortran, which tells no capitals apart, a capital letter could be one of the function's own small ones. */
+export const parameterIn = (name: string, row: LanguageRow): string => (row.id !== 'fortran' ? name : /^[A-Z]$/.test(name) ? 'x' : name.toLowerCase());
 
 /** The row for an editor's language id; null for a language that code is not written in. */
 export function codeLanguage(id: string): LanguageRow | null {

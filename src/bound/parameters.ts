@@ -17,6 +17,8 @@ export interface Result {
 
 const MOST_BOXES = 64;
 const BOX_SLACK = 1.0008;
+/** Parameters of which all choices of ends are tried. */
+const MOST_CORNER_NAMES = 3;
 
 /** The supremum over the parameters too: lower bounds at the corners of their box, upper bounds on halves of it where the two differ. */
 export function overParameters(parameters: ParameterBalls, start: Result | null, solve: (box: ParameterBalls) => Result | null): Result | null {
@@ -48,6 +50,22 @@ export function overParameters(parameters: ParameterBalls, start: Result | null,
   return shown === null ? null : { ...shown, upper: upper === null ? null : real.upperEnd(upper), lower, steps: [...shown.steps, `Parameters: ${open.length} boxes.`] };
 }
 
+/** Where the remainder is monotone in each parameter: upper bounds at the outer ends of the ranges, lower bounds at ends that belong to them; null where one of them has no bound. */
+export function atCorners(parameters: ParameterBalls, solve: (box: ParameterBalls) => Result | null): Result | null {
+  if (parameters.size > MOST_CORNER_NAMES) return null;
+  const outer = [...parameters].reduce<readonly ParameterBalls[]>((corners, [name, ball]) => corners.flatMap((corner) => [real.lowerEnd(ball), real.upperEnd(ball)].map((end) => new Map([...corner, [name, end] as const]))), [new Map()]);
+  let [upper, lower]: [Ball, Ball] = [real.ZERO, real.ZERO];
+  let worst: Result | null = null;
+  for (const corner of outer) {
+    const result = solve(corner);
+    if (!result?.upper) return null;
+    if (worst === null || real.compare(result.upper, upper) === 1) worst = result;
+    upper = real.maximum(upper, real.upperEnd(result.upper));
+  }
+  for (const corner of cornersOf(parameters)) lower = real.maximum(lower, solve(corner)?.lower ?? real.ZERO);
+  return worst && { ...worst, upper: real.upperEnd(upper), lower, steps: [...worst.steps, `Parameters: the derivative of the remainder with respect to ${[...parameters.keys()].join(', ')} keeps its sign, so that its largest values are at the ends of the ranges.`] };
+}
+
 /** Up to 8 choices of both ends of every parameter. */
 function cornersOf(parameters: ParameterBalls): readonly ParameterBalls[] {
   let corners: Map<string, Ball>[] = [new Map()];
@@ -56,8 +74,8 @@ function cornersOf(parameters: ParameterBalls): readonly ParameterBalls[] {
       corners = corners.map((corner) => new Map([...corner, [name, real.midpoint(ball)] as const]));
       continue;
     }
-    // The rounded ball may stick out a little; its ends are drawn in so that they are values of the parameter.
-    const inset = real.fromDouble(1 - 2 ** -40);
+    // The ball sticks out by the rounding of its radius; its ends are drawn in by more than that, so that they are values of the parameter.
+    const inset = real.fromDouble(1 - 2 ** -24);
     const half = real.multiply(real.radius(ball), inset, 80);
     const ends = [real.subtract(real.midpoint(ball), half, 128), real.add(real.midpoint(ball), half, 128)].map(real.midpoint);
     corners = corners.flatMap((corner) => ends.map((end) => new Map([...corner, [name, end] as const])));

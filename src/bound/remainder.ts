@@ -8,8 +8,9 @@ import { isExactOn } from './exactSum.ts';
 import { scaleOut } from './homogeneous.ts';
 import { sumOf } from './local.ts';
 import { atPoint, byDifference, type Memory, type ModelCache, reachesLocalEnd, ruleOfThumb, wholeTask } from './near.ts';
+import { isMonotoneIn } from './monotone.ts';
 import { ballNumbers, doubles, type Numbers, type ParameterBalls, withValues } from './numbers.ts';
-import { overParameters, type Result } from './parameters.ts';
+import { atCorners, overParameters, type Result } from './parameters.ts';
 import { type PieceTask, refinePieces, remainderAt } from './pieces.ts';
 import { parameterBalls, type Segment, segmentsOf } from './region.ts';
 import { settledOf, type SharpProblem, slackOf } from './sharp.ts';
@@ -60,6 +61,9 @@ export function bound(problem: SharpProblem, cache: ModelCache = new Map(), leng
   requireReal(segments, variable, parameters);
   const settled = (result: Result | null): boolean => result !== null && (result.unbounded === true || (result.upper !== null && ratioOf(result) <= settledOf(problem)));
   const memory = { cache, lengthHint };
+  const inBox = (box: ParameterBalls): Result | null => run(doubles(box), segments, problem, variable, check, { cache: new Map(), lengthHint });
+  if (parameters.size > 0 && [...parameters.keys()].every((name) => isMonotoneIn(name, segments, problem.measure, variable, parameters, doubles, check))) improve(atCorners(parameters, inBox));
+  if (settled(best)) return answer(best);
   improve(run(doubles(parameters), segments, problem, variable, check, memory));
   let precision = 128;
   for (let round = 0; round < (parameters.size > 0 && best !== null ? 0 : 4) && !settled(best); round += 1) {
@@ -73,7 +77,7 @@ export function bound(problem: SharpProblem, cache: ModelCache = new Map(), leng
     }
     precision *= 2;
   }
-  if (parameters.size > 0 && !settled(best)) best = overParameters(parameters, best, (box) => run(doubles(box), segments, problem, variable, check, { cache: new Map(), lengthHint }));
+  if (parameters.size > 0 && !settled(best)) best = overParameters(parameters, best, inBox);
   return answer(best);
 }
 

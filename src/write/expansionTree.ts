@@ -1,7 +1,8 @@
 /** An expansion as trees that are ready to be written: its sum, term by term, and its O-term. */
-import { build, mapChildren, Q, sameExpression, walk, type Expression } from '../expression/index.ts';
 import type { Expansion, ExpansionRemainder, ExpansionTerm } from '../expand/expansion.ts';
-import { arrange, commonFraction, factorsOf, type Factors, multiplyFactors, NO_FACTORS, powerFactors, splitSign, standsBehind } from './layout.ts';
+import { build, type Expression, mapChildren, Q, sameExpression, walk } from '../expression/index.ts';
+import { type Factors, factorsOf, multiplyFactors, NO_FACTORS, powerFactors, splitSign } from './factors.ts';
+import { arrange, commonFraction, standsBehind } from './layout.ts';
 
 type Placement = 'inside' | 'outside';
 

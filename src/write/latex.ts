@@ -1,29 +1,11 @@
 /** Expression -> LaTeX as an author types it. */
-import { build, Q, PLAIN_STYLE, type DocumentStyle, type Expression, type Relation, type VectorOperation } from '../expression/index.ts';
-import { runs, splitSign } from './layout.ts';
+import { build, type DocumentStyle, type Expression, PLAIN_STYLE, Q, type Relation } from '../expression/index.ts';
+import { splitSign } from './factors.ts';
+import { atom, BARE_NAMES, glue, Level, spaced, standardCommand, standsBare, withGrowingBrackets, withPrimes, type Written } from './latexPieces.ts';
+import { writeVector } from './latexVectors.ts';
 import { describe } from './names.ts';
-import { isGreekWord, latexSymbol } from './symbols.ts';
+import { latexSymbol } from './symbols.ts';
 import { enclosedArguments, isCallShape } from './template.ts';
-
-/** How tightly a text binds. A part in a place that needs more than it has gets parentheses. */
-const enum Level {
-  Relation = 0,
-  Sum = 1,
-  Product = 2,
-  /** `\sin x`: binds like a product on its right side only. */
-  Prefix = 3,
-  Power = 4,
-  Atom = 5,
-}
-
-interface Written {
-  readonly text: string;
-  readonly level: Level;
-  /** Higher than a line of text: parentheses around it must grow. */
-  readonly tall: boolean;
-  /** Ends with an argument without parentheses (`2\sin x`), which would take in what follows. */
-  readonly open?: boolean;
-}
 
 const RELATIONS: Readonly<Record<Relation, string>> = {
   '=': '=',
@@ -50,14 +32,8 @@ export function toLatex(expression: Expression, style: DocumentStyle = PLAIN_STY
   return new LatexWriter(style).write(expression).text;
 }
 
-/** Joins two pieces of LaTeX so that a command name does not swallow a letter. */
-export function glue(a: string, b: string): string {
-  if (a === '') return b;
-  if (/\\[A-Za-z]+$/.test(a) && /^[A-Za-z]/.test(b)) return `${a} ${b}`;
-  return a + b;
-}
-
-class LatexWriter {
+/** One style of writing. Methods give the text with what its surroundings must know of it. */
+export class LatexWriter {
   readonly style: DocumentStyle;
   constructor(style: DocumentStyle) {
     this.style = style;
@@ -128,7 +104,7 @@ class LatexWriter {
         return { text, level: Level.Relation, tall: sides.some((s) => s.tall) };
       }
       case 'vector':
-        return this.vector(e.operation, e.name, e.args);
+        return writeVector(this, e.operation, e.name, e.args);
     }
   }
 
@@ -275,20 +251,11 @@ class LatexWriter {
     const form = describe(id)?.names.latexForm;
     if (form) {
       const safe = enclosedArguments(form, args.length);
-      const text = this.grown(form(written.map((w, i) => (safe[i] === true || w.level >= Level.Power ? w : this.parenthesised(w)).text)), texts, tall);
+      const plain = form(written.map((w, i) => (safe[i] === true || w.level >= Level.Power ? w : this.parenthesised(w)).text));
+      const text = tall && this.style.parentheses === 'auto' ? withGrowingBrackets(plain, texts) : plain;
       return { text, level: isCallShape(text) && !/^\\(?:ln|log|(?:arc)?(?:sin|cos|tan))/.test(text) ? Level.Atom : Level.Power, tall };
     }
     return this.prefixCall(this.commandName(id) ?? `\\operatorname{${id}}`, written, args, delimited);
-  }
-
-  /** Brackets of a template that stand around a tall list of arguments grow with it. */
-  grown(text: string, args: readonly string[], tall: boolean): string {
-    if (!tall || this.style.parentheses !== 'auto') return text;
-    for (let i = 0; i < args.length; i += 1) {
-      const inside = `(${args.slice(i).join(', ')})`;
-      if (text.endsWith(inside)) return `${text.slice(0, -inside.length)}\\left${inside.slice(0, -1)}\\right)`;
-    }
-    return text;
   }
 
   prefixCall(name: string, written: readonly Written[], args: readonly Expression[], delimited: boolean): Written {
@@ -328,80 +295,4 @@ class LatexWriter {
     return { text: grows ? `${name}\\left(${inner.text}\\right)` : `${name}(${inner.text})`, level: Level.Atom, tall: inner.tall };
   }
 
-  vector(operation: VectorOperation, name: string | undefined, args: readonly Expression[]): Written {
-    const [first] = args;
-    const list = (): string => args.map((a) => this.write(a).text).join(', ');
-    switch (operation) {
-      case 'symbol':
-        return atom(name?.startsWith('\\') ? name : `\\mathbf{${name ?? ''}}`);
-      case 'norm':
-        return atom(`\\left|${list()}\\right|`);
-      case 'dot':
-      case 'cross':
-        return { text: args.map((a) => this.at(a, Level.Power).text).join(operation === 'dot' ? ' \\cdot ' : ' \\times '), level: Level.Product, tall: false };
-      case 'directional': {
-        const along = runs(args.slice(1)).map(({ factor, count }) => ({ text: `${this.at(factor, Level.Power).text} \\cdot \\nabla`, count }));
-        const [only] = along;
-        const operator = along.length === 1 && only?.count === 1 ? only.text : along.map(({ text, count }) => `(${text})${raisedTo(count)}`).join('');
-        return { text: `${operator} ${first ? this.at(first, Level.Power).text : ''}`, level: Level.Product, tall: false };
-      }
-      case 'ordered': {
-        const pieces = runs(args).map(({ factor, count }) => {
-          const inner = this.at(factor, count === 1 ? Level.Power : Level.Atom).text;
-          return /^\S*\^/.test(inner) && count > 1 ? `(${inner})${raisedTo(count)}` : `${inner}${raisedTo(count)}`;
-        });
-        return { text: pieces.reduce(glue, ''), level: pieces.length === 1 ? Level.Power : Level.Product, tall: false };
-      }
-      case 'commutator':
-        return atom(`[${list()}]`);
-      case 'anticommutator':
-        return atom(`\\{${list()}\\}`);
-      case 'trace':
-      case 'determinant': {
-        const sign = operation === 'trace' ? '\\operatorname{tr}' : '\\det';
-        const inner = first ? this.write(first) : atom('');
-        return /^(?:[A-Za-z]|\\mathbf\{[A-Za-z]\})$/.test(inner.text) ? { text: `${sign} ${inner.text}`, level: Level.Product, tall: false } : { text: `${sign}(${inner.text})`, level: Level.Power, tall: false };
-      }
-      case 'tuple':
-        return atom(`\\left(${list()}\\right)`);
-    }
-  }
-}
-
-const raisedTo = (count: number): string => (count === 1 ? '' : `^${count < 10 ? count : `{${count}}`}`);
-
-/** Names after which an author leaves the parentheses away, and which take a power before their argument. */
-const BARE_NAMES = /^\\(?:(?:arc)?(?:sin|cos|tan)|cot|sec|csc|(?:sin|cos|tan|cot)h|ln|log|lg|exp|operatorname\{(?:ar[cs]?\w+|sech|csch)\})(?:\^(?:.|\{[^{}]*\}))?$/;
-/** Commands that LaTeX defines without packages; other function names are written as operators. */
-const STANDARD_COMMANDS = new Set('arccos arcsin arctan arg cos cosh cot coth csc deg det dim exp gcd hom inf ker lg lim ln log max min Pr sec sin sinh sup tan tanh'.split(' '));
-
-function standardCommand(name: string): string {
-  const word = /^\\([A-Za-z]+)$/.exec(name)?.[1];
-  return word === undefined || STANDARD_COMMANDS.has(word) || isGreekWord(word) ? name : `\\operatorname{${word}}`;
-}
-
-const atom = (text: string): Written => ({ text, level: Level.Atom, tall: false });
-const spaced = (text: string): string => (/^[A-Za-z0-9(]/.test(text) ? ` ${text}` : text);
-/** Primes go before a subscript's end: `y_i` differentiated is `y_i'`, which TeX sets the same way as `y'_i`. */
-const withPrimes = (base: string, mark: string): string => (base.includes('^') ? `{${base}}${mark}` : `${base}${mark}`);
-
-/** An argument that needs no parentheses after `\sin`: a letter, a number, a fraction, or a product of letters led by a number. */
-function standsBare(e: Expression, text: string): boolean {
-  if (text.startsWith('-')) return false;
-  switch (e.kind) {
-    case 'symbol':
-      return !/^\\mathrm/.test(latexSymbol(e.name));
-    case 'constant':
-      return true;
-    case 'call':
-      return e.function === 'abs';
-    case 'number':
-      return e.written === undefined;
-    case 'quotient':
-      return /^\\[dt]?frac/.test(text);
-    case 'product':
-      return e.factors.every((f, i) => (f.kind === 'symbol' && !/^\\mathrm/.test(latexSymbol(f.name))) || f.kind === 'constant' || (i === 0 && f.kind === 'number' && Q.isInteger(f.value)));
-    default:
-      return false;
-  }
 }

@@ -1,6 +1,6 @@
 /** Expression -> one line of plain operators, shared by the numeric text, the exact strings of the protocol and program code: a dialect says how the pieces look. */
-import { build, Q, type ConstantName, type Expression, type Rational, type Relation } from '../expression/index.ts';
-import { splitSign } from './layout.ts';
+import { build, type ConstantName, type Expression, Q, type Rational, type Relation } from '../expression/index.ts';
+import { splitSign } from './factors.ts';
 
 export const enum Binding {
   Relation = 0,

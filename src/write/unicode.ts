@@ -1,11 +1,11 @@
 /** Expression -> one line of Unicode text for hovers, titles and terminals: `x − x³/6 + O(x⁵)`. */
-import { build, Q, type ConstantName, type Expression } from '../expression/index.ts';
-import { atom, Binding, enclosed, type Dialect, type Piece, writeLinear } from './linear.ts';
-import { asPiece } from './mpmath.ts';
+import { build, type ConstantName, type Expression, Q } from '../expression/index.ts';
 import { runs } from './layout.ts';
+import { atom, Binding, type Dialect, enclosed, type Piece, writeLinear } from './linear.ts';
+import { asPiece } from './mpmath.ts';
 import { describe } from './names.ts';
-import { enclosedArguments } from './template.ts';
 import { primes, superscript, unicodeSymbol } from './symbols.ts';
+import { enclosedArguments } from './template.ts';
 
 const CONSTANTS: Readonly<Record<ConstantName, string>> = { pi: 'π', e: 'e', i: 'i', eulerGamma: 'γ', catalan: 'G', glaisher: 'A', infinity: '∞' };
 const RELATIONS: Readonly<Record<string, string>> = { about: '≈', tilde: '∼', to: '→', define: ':=', '<=': '≤', '>=': '≥', '!=': '≠', propto: '∝', ll: '≪', gg: '≫' };

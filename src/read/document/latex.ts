@@ -208,21 +208,12 @@ function lineEnd(text: string, from: number, to: number): number {
 }
 
 /** The closing dollar of inline mathematics: outside braces where `balanced`, before a blank line; -1 where there is none. */
-function inlineEnd(text: string, from: number, to: number, balanced: boolean): number {
-  let braces = 0;
-  for (let i = from; i < to; i += 1) {
-    const c = text.charCodeAt(i);
-    if (c === 92) i += 1;
-    else if (c === 37) i = lineEnd(text, i, to) - 1;
-    else if (c === 123) braces += 1;
-    else if (c === 125) braces -= 1;
-    else if (c === 36 && (braces <= 0 || !balanced)) return i;
-    else if (c === 10 && isBlankLine(text, i + 1)) return -1;
-  }
-  return -1;
-}
+const inlineEnd = (text: string, from: number, to: number, balanced: boolean): number => dollarEnd(text, from, to, (_, braces) => braces <= 0 || !balanced);
 
-function displayEnd(text: string, from: number, to: number): number {
+const displayEnd = (text: string, from: number, to: number): number => dollarEnd(text, from, to, (i, braces) => braces <= 0 && text.charCodeAt(i + 1) === 36);
+
+/** The first dollar that `closes`, escapes and comments passed over, before a blank line; -1 where there is none. */
+function dollarEnd(text: string, from: number, to: number, closes: (at: number, braces: number) => boolean): number {
   let braces = 0;
   for (let i = from; i < to; i += 1) {
     const c = text.charCodeAt(i);
@@ -230,7 +221,7 @@ function displayEnd(text: string, from: number, to: number): number {
     else if (c === 37) i = lineEnd(text, i, to) - 1;
     else if (c === 123) braces += 1;
     else if (c === 125) braces -= 1;
-    else if (c === 36 && braces <= 0 && text.charCodeAt(i + 1) === 36) return i;
+    else if (c === 36 && closes(i, braces)) return i;
     else if (c === 10 && isBlankLine(text, i + 1)) return -1;
   }
   return -1;

@@ -1,5 +1,5 @@
 /** `f^{-1}(x)` is the inverse function, `\phi^2(t)` the square of `\phi(t)`: exponents between a function's name and its argument. */
-import { build, type Expression, type Rational } from '../../expression/index.ts';
+import type { Expression } from '../../expression/index.ts';
 import { bracketArguments } from './calls.ts';
 import { FUNCTION_LETTER, isName } from './facts.ts';
 import { exponentOf } from './grammar.ts';
@@ -32,6 +32,9 @@ export function raisedFunction(p: State, from: number, base: string, index: stri
 }
 
 function wholeNumber(e: Expression): bigint | null {
-  const value: Rational | null = e.kind === 'number' ? e.value : e.kind === 'negation' && e.operand.kind === 'number' ? build.number(-e.operand.value.num).value : null;
-  return value?.den === 1n ? value.num : null;
+  if (e.kind === 'negation') {
+    const value = wholeNumber(e.operand);
+    return value === null ? null : -value;
+  }
+  return e.kind === 'number' && e.value.den === 1n ? e.value.num : null;
 }

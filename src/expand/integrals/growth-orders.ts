@@ -1,6 +1,6 @@
 /** How fast moments and Taylor coefficients of a function of t grow or shrink, read off its form: whether a series of their products diverges. */
 import type { Field } from '../../algebra/types.ts';
-import { build, dependsOn, type Expression, Q, substitute } from '../../expression/index.ts';
+import { build, children, dependsOn, type Expression, Q, substitute } from '../../expression/index.ts';
 import { differentiate } from '../../functions/index.ts';
 
 /** An end of the half line. */
@@ -69,3 +69,7 @@ function growthOrders(field: Field, e: Expression, v: string): GrowthOrders {
 }
 
 const isPowerOf = (e: Expression, v: string): boolean => (e.kind === 'negation' ? isPowerOf(e.operand, v) : isPower(e, v));
+
+/** Whether the kernel may oscillate: then the end of the range contributes waves of its own. */
+export const hasWaves = (h: Expression): boolean =>
+  h.kind === 'call' ? !['log', 'atan', 'sqrt', 'exp'].includes(h.function) || h.args.some(hasWaves) : (h.kind === 'constant' && h.name === 'i') || children(h).some(hasWaves);

@@ -1,6 +1,6 @@
 /** Integral nodes whose limits move: the derivative in t is integrated term by term, and the constant is fixed by the limits. */
 import type { Element } from '../../algebra/types.ts';
-import { build, children, type Expression, type IntegralNode, Q, substitute } from '../../expression/index.ts';
+import { build, children, type Expression, type IntegralNode, mapChildren, Q, type Rational, substitute } from '../../expression/index.ts';
 import { Declined } from '../../outcome.ts';
 import { add, type Context, eventualSign, exactOf, growth, integrate, isKnownZero, isOscillating, isZero, monomialOf, type Multi, multiply, orderSeries, Series, split, subtract, theta, unitMonomial, withExact } from '../../series/index.ts';
 import { openSide } from '../open-side.ts';
@@ -141,12 +141,51 @@ function otherwise(s: Session, e: IntegralNode, name: string, lower: Expression,
   const low = infinityOf(lower) === 0 ? lower : null;
   const high = infinityOf(upper) === 0 ? upper : null;
   if (low && high === null && isZero(c, c.field.fromExpression(low))) {
-    const found = orNull(() => byMellin(s, e.body, name, c.local, evaluate));
+    const found = orNull(() => byMellin(s, e.body, name, c.local, null, evaluate));
     if (found !== null) return found;
   }
+  const singular = low && high ? orNull(() => bySingularKernel(s, e.body, name, low, high, evaluate)) : null;
+  if (singular !== null) return singular;
   const step = low && high === null ? orNull(() => bySmoothStep(s, e.body, name, low, evaluate)) : null;
   if (step !== null) return step;
   return orNull(() => byStationaryPhase(s, e.body, name, low, high, evaluate));
+}
+
+/** Over a finite range with a kernel of t/x about an end or about 0 inside, where it becomes singular; a sum term by term. */
+function bySingularKernel(s: Session, body: Expression, v: string, low: Expression, high: Expression, evaluate: Evaluate): Multi | null {
+  const c = s.context;
+  const t = build.symbol(v);
+  const over = (from: Expression | null, direction: 1 | -1, length: Expression): Multi | null => {
+    const step = direction === 1 ? t : build.negation(t);
+    const turned = from === null ? substitute(body, v, step) : tidied(substitute(body, v, build.sum(from, step)));
+    const whole = orNull(() => byMellin(s, turned, v, c.local, length, evaluate));
+    if (whole !== null || turned.kind !== 'sum') return whole;
+    return turned.terms.reduce<Multi | null>((sum, term) => {
+      const part = sum === null ? null : parametric(s, { kind: 'integral', variable: t, lower: build.number(0), upper: length, body: term }, v, build.number(0), length, evaluate);
+      return sum === null || part === null ? null : add(c, sum, part);
+    }, Q.ZERO);
+  };
+  const [below, above] = [low, high].map((end) => c.field.sign(c.field.fromExpression(end)));
+  if (below === 0 && above === 1) return over(null, 1, high);
+  if (below === -1 && above === 0) return over(null, -1, build.negation(low));
+  if (below === -1 && above === 1) {
+    const left = over(null, -1, build.negation(low));
+    const right = left === null ? null : over(null, 1, high);
+    return left === null || right === null ? null : add(c, left, right);
+  }
+  const length = build.difference(high, low);
+  return c.field.sign(c.field.fromExpression(length)) === 1 ? (over(low, 1, length) ?? over(high, -1, length)) : null;
+}
+
+/** Numbers that meet in nested sums, added: x + (1 + t) - 1 is x + t. */
+function tidied(e: Expression): Expression {
+  const inner = mapChildren(e, tidied);
+  if (inner.kind !== 'sum') return inner;
+  const flat = inner.terms.flatMap((t) => (t.kind === 'sum' ? t.terms : t.kind === 'negation' && t.operand.kind === 'sum' ? t.operand.terms.map(build.negation) : [t]));
+  const valueOf = (t: Expression): Rational | null => (t.kind === 'number' ? t.value : t.kind === 'negation' && t.operand.kind === 'number' ? Q.negate(t.operand.value) : null);
+  const others = flat.filter((t) => valueOf(t) === null);
+  const total = flat.reduce<Rational>((sum, t) => Q.add(sum, valueOf(t) ?? Q.ZERO), Q.ZERO);
+  return build.sum(...others, ...(Q.isZero(total) && others.length > 0 ? [] : [build.number(total)]));
 }
 
 function orNull(find: () => Multi | null): Multi | null {

@@ -1,7 +1,7 @@
 /**
  * Integrals over (0, inf) of f(t) h(t/s) where s is a power of the variable, by Mellin transforms: the integral is that of s^z F(z) H(z) over a vertical line, with F(z) the moment of f of order -z and H(z) that of h of order z - 1;
  * it expands in the residues beside that line. They lie where h has powers of its argument at the end that t/s approaches, and f at the opposite one; where two meet, logarithms arise.
- * Both transforms are needed in closed form, and a line on which both converge. Source: Wong, Asymptotic Approximations of Integrals, ch. 3; Bleistein & Handelsman ch. 4 (from memory).
+ * Both transforms are needed in closed form, and a line on which both converge. Over (0, b) the weight f ends at b, where the kernel's own series at infinity serves: F(z) is needed near its poles only. Source: Wong, Asymptotic Approximations of Integrals, ch. 3; Bleistein & Handelsman ch. 4 (from memory).
  */
 import type { Element } from '../../algebra/types.ts';
 import { build, children, dependsOn, type Expression, Q } from '../../expression/index.ts';
@@ -11,18 +11,19 @@ import { add, beyondAllOrders, type Context, isOscillating, isZero, logarithm, m
 import { openSide } from '../open-side.ts';
 import type { Evaluate, Session } from '../session.ts';
 import { completeIntegral, SHIFT } from './complete.ts';
-import { diverges, type End, isPower, logarithmPower } from './growth-orders.ts';
+import { cutOffMoment } from './cut-off.ts';
+import { diverges, type End, hasWaves, isPower, logarithmPower } from './growth-orders.ts';
 import { homogeneous } from './homogeneous.ts';
 import { type Range, signOn } from './monotone.ts';
 
 /** Poles in a row without residue after which no more are looked for. */
 const MOST_EMPTY = 24;
 
-/** Null where the integrand is not of that form. `x` is the variable, which tends to 0 or infinity. */
-export function byMellin(s: Session, body: Expression, v: string, x: string, evaluate: Evaluate): Multi | null {
+/** The integral over (0, high), high > 0 free of what varies, null for infinity. Null where the integrand is not of that form. `x` is the variable, which tends to 0 or infinity. */
+export function byMellin(s: Session, body: Expression, v: string, x: string, high: Expression | null, evaluate: Evaluate): Multi | null {
   const c = s.context;
   const { field } = c;
-  const halfLine: Range = { variable: v, low: build.number(0), high: null, field };
+  const halfLine: Range = { variable: v, low: build.number(0), high, field };
   const parts: Factors = { outside: [], fixed: [], mixed: [] };
   sort(body, v, (e) => (e.kind === 'symbol' ? e.name !== v && s.bindings.has(e.name) : children(e).some((child) => dependsOn(child, x))), (e) => signOn(halfLine, e) === 1, parts);
   const variable = s.bindings.get(x);
@@ -34,15 +35,19 @@ export function byMellin(s: Session, body: Expression, v: string, x: string, eva
   const f = build.product(...parts.fixed);
   const h = form.tree;
   const front = multiply(c, evaluate(s, build.product(...parts.outside)), power(c, variable, form.degree));
-  const alone = isPower(f, v) ? completeIntegral(field, build.product(f, h), v, null) : null;
+  if (high && hasWaves(h)) return null;
+  const weight: Weight = { f, high };
+  const alone = high === null && isPower(f, v) ? completeIntegral(field, build.product(f, h), v, null) : null;
   if (alone) return multiply(c, front, scaleBy(c, power(c, variable, field.multiply(form.g, field.add(degreeOf(c, f, v), Q.ONE))), alone));
   // The unit of t is s = x^g; t/s is small where s grows.
   const unit = power(c, variable, form.g);
   const grows = signOfExponent(c, field.multiply(lead.exponent, form.g));
   if (grows === 0) return null;
   const near: End = grows < 0 ? 'zero' : 'infinity';
+  // Where t/s stays bounded, the integrand expands as it stands.
+  if (high && near === 'zero') return null;
   const far: End = near === 'zero' ? 'infinity' : 'zero';
-  if (!meet(endsOf(s, f, v, evaluate), endsOf(s, h, v, evaluate), field)) return null;
+  if (!meet(endsOf(s, f, v, high === null, evaluate), endsOf(s, h, v, true, evaluate), field)) return null;
   const poles = merged(c, exponentsAt(s, h, v, near, evaluate), exponentsAt(s, f, v, far, evaluate), near);
   if (poles(0) === null) return null;
   c.notes.sided = true;
@@ -58,7 +63,7 @@ export function byMellin(s: Session, body: Expression, v: string, x: string, eva
         break;
       }
       next += 1;
-      const laurent = residue(s, f, h, v, pole, evaluate);
+      const laurent = residue(s, weight, h, v, pole, evaluate);
       if (laurent.length === 0) {
         empty += 1;
         if (empty > MOST_EMPTY) throw new Declined('no-expansion', 'The integral is smaller than every power of the variable here; integrate first.');
@@ -84,6 +89,12 @@ export function byMellin(s: Session, body: Expression, v: string, x: string, eva
   const large = near === 'zero' ? unit : reciprocal(c, unit);
   const ends = poles(MOST_EMPTY) === null;
   return multiply(c, front, ends ? multiply(c, sum, add(c, Q.ONE, beyondAllOrders(c, large))) : sum);
+}
+
+/** f on (0, high). */
+interface Weight {
+  readonly f: Expression;
+  readonly high: Expression | null;
 }
 
 interface Factors {
@@ -196,22 +207,31 @@ function merged(c: Context, ofKernel: (k: number) => Element | null, ofWeight: (
 }
 
 /** a_(-1), a_(-2), ... of F(z) H(z) at the pole; empty where it is regular. */
-function residue(s: Session, f: Expression, h: Expression, v: string, pole: Element, evaluate: Evaluate): Element[] {
+function residue(s: Session, { f, high }: Weight, h: Expression, v: string, pole: Element, evaluate: Evaluate): Element[] {
   const { field, budget } = s.context;
   const place = field.toExpression(pole);
   const shift = build.symbol(SHIFT);
   const z = build.sum(place, shift);
-  const product = build.product(momentOf(s, f, v, build.negation(z), -1), momentOf(s, h, v, build.difference(z, build.number(1)), 1));
+  const ofKernel = momentOf(s, h, v, build.difference(z, build.number(1)), 1);
   const inner = openSide({ variable: shift, point: build.number(0), assumptions: [] }, 'right', budget);
-  const value = evaluate(inner.session, inner.fromVariable(product));
+  const laurent = (tree: Expression): Element[] => laurentOf(s, inner.context, evaluate(inner.session, inner.fromVariable(tree)));
+  if (high === null) return laurent(build.product(momentOf(s, f, v, build.negation(z), -1), ofKernel));
+  const ofWeight = cutOffMoment(s.context, f.kind === 'product' ? f.factors : [f], v, high, pole);
+  if (!ofWeight.exact && laurent(ofKernel).length > 1) throw new Declined('no-expansion', 'The moments of the integrand are not known in closed form; integrate first or split the integrand.');
+  return laurent(build.product(ofWeight.tree, ofKernel));
+}
+
+/** The coefficients of e^(-1), e^(-2), ... of a series in e. */
+function laurentOf(s: Session, inner: Context, value: Multi): Element[] {
+  const { field } = s.context;
   if (!(value instanceof Series)) return [];
   const laurent: Element[] = [];
   for (let k = 0; ; k += 1) {
     const t = value.stream.at(k);
-    if (!t || signOfExponent(inner.context, t.exponent) >= 0) return laurent;
-    const exponent = inner.context.field.asRational(t.exponent);
-    if (value.element !== inner.context.scale.local || t.order || t.coefficient instanceof Series || exponent?.den !== 1n) throw new Declined('no-expansion', 'The integral over the parameter has no expansion in powers here; integrate first.');
-    const a = field.fromExpression(inner.context.field.toExpression(t.coefficient));
+    if (!t || signOfExponent(inner, t.exponent) >= 0) return laurent;
+    const exponent = inner.field.asRational(t.exponent);
+    if (value.element !== inner.scale.local || t.order || t.coefficient instanceof Series || exponent?.den !== 1n) throw new Declined('no-expansion', 'The integral over the parameter has no expansion in powers here; integrate first.');
+    const a = field.fromExpression(inner.field.toExpression(t.coefficient));
     if (isZero(s.context, a)) continue;
     while (laurent.length < -Number(exponent.num)) laurent.push(Q.ZERO);
     laurent[-Number(exponent.num) - 1] = a;
@@ -256,7 +276,7 @@ interface Ends {
   readonly infinity: Element | null;
 }
 
-function endsOf(s: Session, e: Expression, v: string, evaluate: Evaluate): Ends {
+function endsOf(s: Session, e: Expression, v: string, reachesInfinity: boolean, evaluate: Evaluate): Ends {
   const leadAt = (end: End): Element | null => {
     const inner = sideAt(s.context, v, end);
     const own = inner.context;
@@ -269,7 +289,7 @@ function endsOf(s: Session, e: Expression, v: string, evaluate: Evaluate): Ends 
     const size = end === 'zero' ? exponent : s.context.field.negate(exponent);
     return onlyOscillates(own, lead.constant) ? s.context.field.subtract(size, Q.ONE) : size;
   };
-  return { zero: leadAt('zero'), infinity: leadAt('infinity') };
+  return { zero: leadAt('zero'), infinity: reachesInfinity ? leadAt('infinity') : null };
 }
 
 /** Whether both moments converge on one line: z in (-h0, -h1) and in (f1 + 1, f0 + 1). */

@@ -12,9 +12,12 @@ export const failure = (code: ErrorCode, message: string, place?: { readonly sta
 /** Thrown deep inside a computation when a failure is the only way on; the door of each room turns it into an Outcome. */
 export class Declined extends Error {
   readonly failure: Failure;
+  /** The names of symbols that the question left open is about: whoever brought one of them in knows that no assumption of a reader answers it. */
+  readonly about: readonly string[];
   /** `place` is where in the text that was read, where that is known. */
-  constructor(code: ErrorCode, message: string, place?: { readonly start: number; readonly end: number }) {
+  constructor(code: ErrorCode, message: string, place?: { readonly start: number; readonly end: number }, about: readonly string[] = []) {
     super(message);
+    this.about = about;
     this.failure = place ? { code, message, start: place.start, end: place.end } : { code, message };
   }
 }

@@ -1,6 +1,6 @@
 /** Requests whose text is a differential equation: which of its solution's expansions is asked for. */
 import { type Assumption, build, dependsOn, type Expression, freeSymbols, Q, type Rational, walk } from '../expression/index.ts';
-import { type DifferentialStatement, differentialStatement, expandPerturbation, expandSolution, type Expansion } from '../expand/index.ts';
+import { type DifferentialStatement, differentialStatement, expandPerturbation, expandSolution, type Expansion, standsForUnknown } from '../expand/index.ts';
 import { describe } from '../functions/index.ts';
 import { type Budget, Declined, failure, type Outcome, success } from '../outcome.ts';
 import type { ExpandAnswer, ExpandRequest } from '../protocol.ts';
@@ -36,7 +36,7 @@ export interface DifferentialQuestion {
  * - without both, and a `variable` that is not the independent one: the equation simplified in place, in that variable (often the unknown function itself);
  * - with neither and no variable: the solution with free constants, if the equation is linear in its unknown; else in place for a small unknown.
  */
-export function differentialQuestion(request: ExpandRequest, source: SourceFormula): Outcome<DifferentialQuestion> | null {
+function differentialQuestion(request: ExpandRequest, source: SourceFormula): Outcome<DifferentialQuestion> | null {
   const pieces = [source.formula ?? source.expression, ...source.conditions];
   if (request.unknown === undefined && pieces.some(hasShift)) return null;
   const named = request.variable === undefined ? null : source.readSymbol(request.variable);
@@ -102,7 +102,7 @@ function smallCondition(statement: DifferentialStatement): Expression | undefine
 
 /** Whether functions and derivatives stand in sums and products only: nothing is left to be simplified in place. */
 function isLinear(statement: DifferentialStatement): boolean {
-  return statement.equations.every((equation) => [...walk(equation)].every((e) => e.kind !== 'call' || !freeSymbols(e).some((s) => s.includes('~'))));
+  return statement.equations.every((equation) => [...walk(equation)].every((e) => e.kind !== 'call' || !freeSymbols(e).some(standsForUnknown)));
 }
 
 /** Initial values among the assumptions are part of the problem. */
@@ -123,7 +123,7 @@ function splitAssumptions(texts: readonly string[], statement: DifferentialState
 }
 
 /** The solution that the question asks for, with so many terms or to an order. */
-export function solutionOf(question: DifferentialQuestion, size: Size, time: Budget): Outcome<Expansion> {
+function solutionOf(question: DifferentialQuestion, size: Size, time: Budget): Outcome<Expansion> {
   const { statement, assumptions, stated, unknown, point, variable } = question;
   if (question.kind === 'perturbation' && variable) {
     if (point !== undefined && !(typeof point === 'object' && point.kind === 'number' && point.value.num === 0n)) return failure('bad-request', 'A solution is expanded in a parameter that tends to 0; substitute a parameter that does.');

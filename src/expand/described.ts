@@ -1,6 +1,6 @@
 /** A function by its description: local form at singular places and infinity, differential equation or derivative at regular points. */
 import type { Element } from '../algebra/types.ts';
-import { build, type CallNode, type Expression, Q, type Rational, walk } from '../expression/index.ts';
+import { build, type CallNode, type Expression, freeSymbols, Q, type Rational, walk } from '../expression/index.ts';
 import { acceptsArity, describe, type FormalSeries, type FunctionDescription, type LocalForm, type Place, type Together } from '../functions/index.ts';
 import { Declined } from '../outcome.ts';
 import { add, alongDerivative, beyondAllOrders, compose, type Context, decideSign, divide, eventualSign, exactOf, finiteStream, growth, isRational, isRealMulti, leading, monomial, type Multi, multiply, plainText, scaleBy, Series, signOfExponent, split, subtract, withExact } from '../series/index.ts';
@@ -38,7 +38,7 @@ function inBothArguments(s: Session, d: FunctionDescription, args: readonly Mult
   if (!relation) return null;
   const z = freshSymbol(s, 'z');
   const form = d.together?.(relation, build.symbol(z));
-  if (!form && relation.kind === 'ratio' && relation.size === 'unknown') throw new Declined('needs-assumption', `The answer depends on whether ${plainText(relation.value)} lies below or above 1; assume which.`);
+  if (!form && relation.kind === 'ratio' && relation.size === 'unknown') throw new Declined('needs-assumption', `The answer depends on whether ${plainText(relation.value)} lies below or above 1; assume which.`, undefined, freeSymbols(relation.value));
   if (!form) return null;
   const value = evaluateForm(bind(s, [[z, first]]), form, evaluate);
   return named(c, form.subdominantDropped ? multiply(c, value, add(c, Q.ONE, beyondAllOrders(c, first))) : value, () => build.call(d.id, ...args.map((a) => exactOf(c, a))));

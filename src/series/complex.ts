@@ -15,7 +15,7 @@ export function imaginaryPart(c: Context, e: Element): Element {
   const part = field.divide(field.subtract(e, conjugate), field.multiply(field.rational(2), field.i));
   const real = field.subtract(e, field.multiply(field.i, part));
   const certain = (isRational(part) || field.isReal(part) === 'yes') && (isRational(real) || field.isReal(real) === 'yes');
-  if (!certain) throw new Declined('undecided', `The imaginary part of ${plainText(field.toExpression(e))} could not be found; split it into real and imaginary parts.`);
+  if (!certain) throw new Declined('undecided', `The imaginary part of ${plainText(field.toExpression(e))} could not be found; split it into real and imaginary parts.`, undefined, field.parameters(e));
   return part;
 }
 

@@ -25,8 +25,9 @@ export function undecidedSign(c: Context, element: Element): Declined {
   const written = plainText(c.field.toExpression(element));
   // -b > 0 or -b < 0 asks the same as b > 0 or b < 0.
   const text = written.startsWith('-') ? plainText(c.field.toExpression(c.field.negate(element))) : written;
-  return c.field.parameters(element).length > 0
-    ? new Declined('needs-assumption', `The answer depends on the sign of ${text}; assume ${text} > 0 or ${text} < 0.`)
+  const parameters = c.field.parameters(element);
+  return parameters.length > 0
+    ? new Declined('needs-assumption', `The answer depends on the sign of ${text}; assume ${text} > 0 or ${text} < 0.`, undefined, parameters)
     : new Declined('undecided', `The sign of ${text} could not be decided; give it as a decimal or simplify it.`);
 }
 

@@ -84,7 +84,7 @@ export function isZero(c: Context, m: Multi): boolean {
   if (m instanceof Series) return leading(c, m) === null;
   if (isRational(m)) return m.num === 0n;
   const truth = c.field.isZero(m);
-  if (truth === 'undecided') throw new Declined('undecided', `Whether ${plainText(c.field.toExpression(m))} is zero could not be decided; simplify it by hand.`);
+  if (truth === 'undecided') throw new Declined('undecided', `Whether ${plainText(c.field.toExpression(m))} is zero could not be decided; simplify it by hand.`, undefined, c.field.parameters(m));
   return truth === 'yes';
 }
 

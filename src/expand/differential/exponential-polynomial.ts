@@ -40,7 +40,7 @@ function multiplyPolynomials(c: Context, a: Polynomial, b: Polynomial): Polynomi
   return result;
 }
 
-export function multiplyModes(c: Context, a: ExponentialPolynomial, b: ExponentialPolynomial): ExponentialPolynomial {
+function multiplyModes(c: Context, a: ExponentialPolynomial, b: ExponentialPolynomial): ExponentialPolynomial {
   c.budget.check();
   return addModes(c, [], a.flatMap((x) => b.map((y) => ({ re: addElements(c, x.re, y.re), im: addElements(c, x.im, y.im), polynomial: multiplyPolynomials(c, x.polynomial, y.polynomial) }))));
 }
@@ -50,7 +50,7 @@ export const differentiateModes = (c: Context, a: ExponentialPolynomial): Expone
 
 export const constantModes = (c: Context, value: Element): ExponentialPolynomial => addModes(c, [], [{ re: Q.ZERO, im: Q.ZERO, polynomial: [value] }]);
 /** The value of a constant; null for anything that varies. */
-export function constantValue(a: ExponentialPolynomial): Element | null {
+function constantValue(a: ExponentialPolynomial): Element | null {
   const [only] = a;
   if (!only) return Q.ZERO;
   const still = isRational(only.re) && only.re.num === 0n && isRational(only.im) && only.im.num === 0n;

@@ -33,12 +33,18 @@ export function exponentsOf(c: Context, indicial: Polynomial): Exponent[] {
   });
 }
 
+/** The zeros of a0 + a1 z + a2 z^2 are half +- sqrt(discriminant). */
+export function halfAndDiscriminant(c: Context, [a0, a1, a2]: readonly [Element, Element, Element]): { readonly half: Element; readonly discriminant: Element } {
+  const f = c.field;
+  const half = f.divide(f.negate(a1), f.multiply(Q.rational(2), a2));
+  return { half, discriminant: f.subtract(f.multiply(half, half), f.divide(a0, a2)) };
+}
+
 /** Both zeros; of sqrt(nu^2) = |nu| the bars are left out, since both signs are taken. */
 function quadratic(c: Context, [a0, a1, a2]: Polynomial): Exponent[] {
   const f = c.field;
   if (a0 === undefined || a1 === undefined || a2 === undefined) return [];
-  const half = f.divide(f.negate(a1), f.multiply(Q.rational(2), a2));
-  const discriminant = f.subtract(f.multiply(half, half), f.divide(a0, a2));
+  const { half, discriminant } = halfAndDiscriminant(c, [a0, a1, a2]);
   if (isZero(c, discriminant)) return [{ value: half, multiplicity: 2 }];
   const root = f.fromExpression(withoutBars(f.toExpression(f.power(discriminant, Q.HALF))));
   return [f.add(half, root), f.subtract(half, root)].map((value) => ({ value, multiplicity: 1 }));

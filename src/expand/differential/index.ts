@@ -2,4 +2,4 @@
 export { expandSolution, type SolutionProblem } from './solve.ts';
 export { type InPlace, type InPlaceProblem, type Replaced, simplifyInPlace } from './in-place.ts';
 export { expandPerturbation, type PerturbationProblem } from './small-parameter.ts';
-export { type DifferentialStatement, differentialStatement } from './statement.ts';
+export { type DifferentialStatement, differentialStatement, standsForUnknown } from './statement.ts';

@@ -55,7 +55,7 @@ export function startValues(statement: DifferentialStatement, taken: ReadonlySet
 }
 
 export const plainName = (name: string): string => name.replace(/\\([A-Za-z]+)/g, '$1').replace(/[{}]/g, '');
-export const derivativeName = (name: string, derivative: number): string => `${plainName(name)}${"'".repeat(derivative)}`;
+const derivativeName = (name: string, derivative: number): string => `${plainName(name)}${"'".repeat(derivative)}`;
 export const plainPoint = (e: Expression): string => (e.kind === 'number' ? Q.toText(e.value) : e.kind === 'symbol' ? plainName(e.name) : e.kind === 'constant' ? e.name : 'the point');
 
 export interface RegularSolution {

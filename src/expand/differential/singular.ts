@@ -8,8 +8,8 @@ import type { ExpansionProblem } from '../expansion.ts';
 import { type OpenSide, openSide } from '../open-side.ts';
 import { bind } from '../session.ts';
 import { falling, type RegularSolution } from './initial-value.ts';
-import { type DifferentialStatement, slot } from './statement.ts';
 import { divideElements } from './operator.ts';
+import { type DifferentialStatement, slot } from './statement.ts';
 import { Taylor } from './taylor.ts';
 
 const TRIAL = "coefficient'";
@@ -77,7 +77,7 @@ function declinedPlainly<T>(body: () => T): T {
   try {
     return body();
   } catch (error) {
-    if (error instanceof Declined && error.message.includes(TRIAL)) throw notAPowerSeries();
+    if (error instanceof Declined && error.about.includes(TRIAL)) throw notAPowerSeries();
     throw error;
   }
 }

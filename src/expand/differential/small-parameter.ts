@@ -8,19 +8,22 @@ import type { Element } from '../../algebra/types.ts';
 import { build, dependsOn, type Expression, freeSymbols, Q, substitute } from '../../expression/index.ts';
 import { differentiate } from '../../functions/index.ts';
 import { attempt, type Budget, Declined, type Outcome } from '../../outcome.ts';
-import { addElements, type Context, isRational, isZero, type Multi, multiplyElements, negateElement, plainText, Series, Stream, unnamed } from '../../series/index.ts';
+import { addElements, type Context, isRational, isZero, multiplyElements, negateElement, plainText, Series, Stream, unnamed } from '../../series/index.ts';
 import { requireShallow } from '../depth.ts';
 import { recentre } from '../equation.ts';
 import { evaluate } from '../evaluate.ts';
 import type { Expansion, ExpansionProblem, ExpansionTerm } from '../expansion.ts';
 import { openSide } from '../open-side.ts';
 import { bind } from '../session.ts';
-import { addModes, constantModes, differentiateModes, exponentOf, type ExponentialPolynomial, type Mode, modesOf, scaleModes, treeOf, valueAtZero } from './exponential-polynomial.ts';
-import { exponentsOf, withoutBars } from './frobenius.ts';
+import { addModes, constantModes, differentiateModes, type ExponentialPolynomial, exponentOf, type Mode, modesOf, scaleModes, treeOf, valueAtZero } from './exponential-polynomial.ts';
+import { exponentsOf, halfAndDiscriminant, withoutBars } from './frobenius.ts';
 import { falling, plainName, startValues } from './initial-value.ts';
+import { solveSystem } from './linear-system.ts';
 import { invertOperator, type Polynomial, scalePolynomial, trimmed } from './operator.ts';
-import { type DifferentialStatement, slot } from './statement.ts';
+import { coefficientReader } from './parameter-series.ts';
+import { secularNote } from './secular.ts';
 import { functionTree } from './solve.ts';
+import { type DifferentialStatement, slot, standsForUnknown } from './statement.ts';
 
 export interface PerturbationProblem extends Omit<ExpansionProblem, 'function' | 'point' | 'side'> {
   readonly statement: DifferentialStatement;
@@ -40,7 +43,7 @@ export function expandPerturbation(problem: PerturbationProblem, budget: Budget)
       return new Perturbation(problem, budget).expansion();
     } catch (error) {
       // A question about a symbol that stands for the solution is none that an assumption could answer.
-      if (error instanceof Declined && error.message.includes('~')) throw new Declined('no-expansion', 'A function in the equation is not analytic along the solution (its sign or a root of it changes there), which is not expanded; choose a scaling in which it is analytic.');
+      if (error instanceof Declined && error.about.some(standsForUnknown)) throw new Declined('no-expansion', 'A function in the equation is not analytic along the solution (its sign or a root of it changes there), which is not expanded; choose a scaling in which it is analytic.');
       throw error;
     }
   });
@@ -81,13 +84,13 @@ class Perturbation {
     if (dependsOn(point, this.small)) throw new Declined('no-expansion', 'The initial point depends on the small parameter; substitute a new variable that starts at a fixed point.');
     const shifted = substitute(equation, statement.variable, build.sum(point, build.symbol(this.time)));
     const slots = Array.from({ length: this.order + 1 }, (_, j) => [slot(this.name, j), this.formal(j)] as const);
-    this.equationTerms = reader(c, () => evaluate(bind(side.session, slots), shifted), (e) => c.field.toExpression(e));
+    this.equationTerms = coefficientReader(c, () => evaluate(bind(side.session, slots), shifted), (e) => c.field.toExpression(e));
     const taken = new Set([equation, ...statement.initial.map((v) => v.value)].flatMap(freeSymbols));
     const start = startValues(statement, taken);
     this.notes.push(...start.notes);
     const memo = new Map<number, (k: number) => Element>();
     this.initialTerms = (derivative) => {
-      const known = memo.get(derivative) ?? reader(c, () => evaluate(side.session, start.value(this.name, derivative)), (e) => e);
+      const known = memo.get(derivative) ?? coefficientReader(c, () => evaluate(side.session, start.value(this.name, derivative)), (e) => e);
       memo.set(derivative, known);
       return known;
     };
@@ -116,7 +119,7 @@ class Perturbation {
     if (!isTop || (isTop.kind === 'number' && Q.isZero(isTop.value))) throw new Declined('no-expansion', 'The highest derivative is multiplied by the small parameter (a singular perturbation): the solution has no expansion in its powers that holds everywhere; rescale the variable inside the boundary layer.');
     const constant = rates.map((r) => {
       const rate = r ? c.field.fromExpression(r) : null;
-      return rate && (isRational(rate) || !c.field.parameters(rate).some((s) => s.includes('~') || s === this.time)) ? rate : null;
+      return rate && (isRational(rate) || !c.field.parameters(rate).some((s) => standsForUnknown(s) || s === this.time)) ? rate : null;
     });
     if (constant.every((a) => a !== null)) {
       this.operator = constant as Element[];
@@ -160,11 +163,10 @@ class Perturbation {
     return modes.flatMap(({ mode, multiplicity }) => Array.from({ length: multiplicity }, (_, power) => ({ mode, power })));
   }
 
-  private quadratic([a0, a1, a2]: [Element, Element, Element]): { mode: Pick<Mode, 're' | 'im'>; multiplicity: number }[] {
+  private quadratic(coefficients: readonly [Element, Element, Element]): { mode: Pick<Mode, 're' | 'im'>; multiplicity: number }[] {
     const { c } = this;
     const f = c.field;
-    const half = f.divide(f.negate(a1), f.multiply(Q.rational(2), a2));
-    const discriminant = f.subtract(f.multiply(half, half), f.divide(a0, a2));
+    const { half, discriminant } = halfAndDiscriminant(c, coefficients);
     if (isZero(c, discriminant)) return [{ mode: { re: half, im: Q.ZERO }, multiplicity: 2 }];
     let sign = f.sign(discriminant);
     if (sign === 'undecided') {
@@ -222,6 +224,7 @@ class Perturbation {
     const terms: ExpansionTerm[] = [];
     let remainder: Expansion['remainder'] = null;
     let quiet = 0;
+    let secular: string | null = null;
     for (let k = 0; remainder === null; k += 1) {
       c.budget.check();
       const resting = this.assumed.length;
@@ -239,7 +242,10 @@ class Perturbation {
         this.assumed.length = resting;
       } else {
         terms.push({ coefficient: treeOf(c, x, time), power: build.number(k), log: 0, scale: null });
-        this.noteSecular(k, x);
+        if (!secular) {
+          secular = secularNote(c, this.solved.map((s) => s[0] ?? []), k, { time: plainName(statement.variable), parameter: plainName(this.small) });
+          if (secular) this.notes.push(secular);
+        }
       }
     }
     const needed = [...c.field.needed].filter((a) => !a.includes('~') && !a.includes("'"));
@@ -258,35 +264,6 @@ class Perturbation {
       oscillating: false,
       assumptions: [...new Set([...this.notes, ...this.assumed, ...c.notes.assumptions, ...needed])],
     };
-  }
-
-  private secularSeen = false;
-
-  private noteSecular(k: number, x: ExponentialPolynomial): void {
-    const start = this.solved.findIndex((s) => (s[0] ?? []).length > 0);
-    const leading = this.solved[start]?.[0] ?? [];
-    if (k === start || this.secularSeen || leading.some((m) => this.growthOf(m) !== null)) return;
-    const growing = x.map((m) => this.growthOf(m)).filter((g) => g !== null);
-    const [first] = growing;
-    if (first === undefined) return;
-    this.secularSeen = true;
-    const t = plainName(this.problem.statement.variable);
-    const small = plainName(this.small);
-    const powers = growing.filter((g) => typeof g === 'number');
-    const exponential = growing.length > powers.length;
-    const most = Math.max(0, ...powers);
-    const growth = exponential ? 'exponentially' : most === 1 ? `like ${t}` : `like ${t}^${most}`;
-    const raised = (power: number): string => (power === 1 ? small : `${small}^${power}`);
-    const range = exponential ? `${raised(k - start)} times it is small` : `${raised(k - start)}*${most === 1 ? t : `${t}^${most}`} is small`;
-    this.notes.push(`the term in ${raised(k)} grows ${growth} (secular): valid while ${range}`);
-  }
-
-  /** The power of t with which a mode grows, 'exponential', or null where it stays bounded as t grows. */
-  private growthOf(m: Mode): number | 'exponential' | null {
-    const sign = isRational(m.re) ? Q.signOf(m.re) : this.c.field.sign(m.re);
-    if (sign === 1) return 'exponential';
-    if (sign === 0) return m.polynomial.length > 1 ? m.polynomial.length - 1 : null;
-    return null;
   }
 
   /** Whether the sum found satisfies the equation and the initial values identically. */
@@ -309,49 +286,3 @@ class Perturbation {
 }
 
 const unsolved = (): Declined => new Declined('no-expansion', 'The problem at parameter 0 is neither linear with constant coefficients nor solved by a constant, so that its solution is not known in closed form here; choose a scaling in which it is.');
-
-/** Coefficient k of a multiseries in powers of the parameter. */
-function reader<T>(c: Context, value: () => Multi, shape: (e: Element) => T): (k: number) => T {
-  let found: Multi | null = null;
-  let index = 0;
-  const known = new Map<number, Element>();
-  return (k) => {
-    found ??= value();
-    if (!(found instanceof Series)) return shape(k === 0 ? found : Q.ZERO);
-    if (found.element.kind !== 'local') throw irregular();
-    for (;;) {
-      const done = known.get(k);
-      if (done !== undefined) return shape(done);
-      const term = found.stream.at(index);
-      if (!term) return shape(Q.ZERO);
-      if (term.coefficient instanceof Series || !isRational(term.exponent) || term.exponent.den !== 1n || term.order) throw irregular();
-      const power = Number(term.exponent.num);
-      if (power < 0) throw irregular();
-      if (power > k) return shape(Q.ZERO);
-      known.set(power, term.coefficient);
-      index += 1;
-    }
-  };
-}
-
-const irregular = (): Declined => new Declined('no-expansion', 'The problem is no power series in the small parameter with whole powers; choose another parameter.');
-
-/** Gauss elimination with exact zero tests. */
-function solveSystem(c: Context, matrix: readonly (readonly Element[])[], right: readonly Element[]): Element[] {
-  const n = right.length;
-  const rows = matrix.map((row, i) => [...row, right[i] as Element]);
-  for (let k = 0; k < n; k += 1) {
-    const pivot = rows.findIndex((row, i) => i >= k && !isZero(c, row[k] as Element));
-    const row = rows[pivot];
-    if (!row) throw new Error('independent solutions with a singular matrix');
-    [rows[k], rows[pivot]] = [row, rows[k] as Element[]];
-    for (let i = 0; i < n; i += 1) {
-      const other = rows[i] as Element[];
-      if (i === k || isZero(c, other[k] as Element)) continue;
-      const factor = c.field.divide(other[k] as Element, row[k] as Element);
-      rows[i] = other.map((x, j) => c.field.subtract(x, c.field.multiply(factor, row[j] as Element)));
-    }
-  }
-  return rows.map((row, k) => c.field.divide(row[n] as Element, row[k] as Element));
-}
-

@@ -37,10 +37,13 @@ const MOST_ORDER = 12;
 /** The symbol that stands for a derivative of an unknown function; no reader produces it. */
 export const slot = (name: string, derivative: number): string => `${name}~${derivative}`;
 /** The function and the derivative that a slot stands for. */
-export function slotOf(symbol: string): { readonly name: string; readonly derivative: number } | null {
+function slotOf(symbol: string): { readonly name: string; readonly derivative: number } | null {
   const at = symbol.lastIndexOf('~');
   return at < 0 ? null : { name: symbol.slice(0, at), derivative: Number(symbol.slice(at + 1)) };
 }
+
+/** Whether a symbol stands for an unknown function, for a derivative of one, or for one of its coefficients. */
+export const standsForUnknown = (symbol: string): boolean => symbol.includes('~');
 
 interface Evidence {
   /** Differentiated names, with whether more than a single prime says so. */

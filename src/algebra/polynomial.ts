@@ -1,6 +1,6 @@
 /** Sparse multivariate polynomials with integer coefficients, as free polynomials in their kernels (relations between kernels are applied in quotient.ts). */
 import { Q } from '../expression/index.ts';
-import { compareExponents, isWhole, type Exponent } from './exponent.ts';
+import { compareExponents } from './exponent.ts';
 import { commonMonomial, compareMonomials, invertMonomial, isUnit, monomialKey, multiplyMonomials, UNIT, type Monomial } from './monomial.ts';
 
 export interface Term {
@@ -160,8 +160,6 @@ export function kernelsIn(f: Polynomial): ReadonlySet<number> {
   for (const t of f) for (const k of t.monomial.kernels) found.add(k);
   return found;
 }
-
-export const hasOnlyWholeExponents = (f: Polynomial): boolean => f.every((t) => t.monomial.exponents.every((e: Exponent) => isWhole(e)));
 
 export function samePolynomial(f: Polynomial, g: Polynomial): boolean {
   if (f === g) return true;

@@ -23,10 +23,10 @@ const signSetOf = (sign: 1 | -1 | 'complex'): SignSet => (sign === 1 ? POSITIVE 
 export const isRealSet = (s: SignSet): boolean => (s & NOT_REAL) === 0;
 export const isNonZero = (s: SignSet): boolean => (s & NIL) === 0 && isRealSet(s);
 
-export const signOfRational = (r: Rational): SignSet => (r.num > 0n ? POSITIVE : r.num < 0n ? NEGATIVE : NIL);
+const signOfRational = (r: Rational): SignSet => (r.num > 0n ? POSITIVE : r.num < 0n ? NEGATIVE : NIL);
 const flip = (s: SignSet): SignSet => (s & (NIL | NOT_REAL)) | (s & NEGATIVE ? POSITIVE : 0) | (s & POSITIVE ? NEGATIVE : 0);
 
-export function timesSigns(a: SignSet, b: SignSet): SignSet {
+function timesSigns(a: SignSet, b: SignSet): SignSet {
   if (a === POSITIVE) return b;
   if (b === POSITIVE) return a;
   let s = 0;
@@ -36,7 +36,7 @@ export function timesSigns(a: SignSet, b: SignSet): SignSet {
   if ((a | b) & NOT_REAL) s = ANY;
   return s;
 }
-export function plusSigns(a: SignSet, b: SignSet): SignSet {
+function plusSigns(a: SignSet, b: SignSet): SignSet {
   if (a === NIL) return b;
   if (b === NIL) return a;
   if ((a | b) & NOT_REAL) return ANY;

@@ -9,6 +9,6 @@ export function commandLink(label: string, command: string, args: readonly unkno
   return `[${escapeMarkdown(label)}](command:${command}${query}${title ? ` "${title.replaceAll('"', "'")}"` : ''})`;
 }
 
-export const tableRow = (cells: readonly string[]): string => `| ${cells.join(' | ')} |`;
+const tableRow = (cells: readonly string[]): string => `| ${cells.join(' | ')} |`;
 export const table = (head: readonly string[], rows: readonly (readonly string[])[]): string =>
   [tableRow(head), tableRow(head.map(() => ':--')), ...rows.map(tableRow)].join('\n');

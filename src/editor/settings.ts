@@ -16,7 +16,7 @@ export interface Settings {
   readonly budget: number;
 }
 
-export const SECTION = 'leadingOrder';
+const SECTION = 'leadingOrder';
 
 export function settingsFor(scope?: { readonly uri: vscode.Uri; readonly languageId: string }): Settings {
   const section = vscode.workspace.getConfiguration(SECTION, scope);

@@ -43,5 +43,3 @@ export interface Environment {
   /** Canonical spelling: in languages that fold case, the first one read. */
   readonly spell: (name: string) => string;
 }
-
-export const NO_IMPORTS: Imports = { modules: new Map(), names: new Map(), open: [] };

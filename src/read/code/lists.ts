@@ -19,7 +19,7 @@ const spelled = (code: Code, env: Environment): string => env.text.slice(code.st
 const whole = (value: bigint): Item => ({ kind: 'whole', value });
 
 /** The list that a piece of code names or is; null where the file does not give it once and for all. */
-export function listAt(code: Code, env: Environment, depth = 0): ListCode | null {
+function listAt(code: Code, env: Environment, depth = 0): ListCode | null {
   if (depth > DEEPEST) return null;
   switch (code.kind) {
     case 'list':

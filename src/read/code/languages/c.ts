@@ -2,7 +2,7 @@
 import { I, POSIX } from './constants.ts';
 import { type CodeLanguage, SLASHES } from './language.ts';
 
-export const C_INTEGERS = ['int', 'long', 'short', 'char', 'unsigned', 'signed', 'size_t', 'ssize_t', 'ptrdiff_t', 'intptr_t', 'uintptr_t', 'int8_t', 'int16_t', 'int32_t', 'int64_t', 'uint8_t', 'uint16_t', 'uint32_t', 'uint64_t', 'bool', '_Bool'];
+const C_INTEGERS = ['int', 'long', 'short', 'char', 'unsigned', 'signed', 'size_t', 'ssize_t', 'ptrdiff_t', 'intptr_t', 'uintptr_t', 'int8_t', 'int16_t', 'int32_t', 'int64_t', 'uint8_t', 'uint16_t', 'uint32_t', 'uint64_t', 'bool', '_Bool'];
 
 export const c: CodeLanguage = {
   family: 'c',

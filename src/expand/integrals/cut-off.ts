@@ -42,7 +42,7 @@ export function cutOffMoment(c: Context, factors: readonly Expression[], v: stri
   const exponent = field.asRational(field.subtract(degree, place));
   if (logarithms > 0 || !exponent || exponent.den > 2n) throw unknown();
   const b = field.fromExpression(high);
-  let [pole, finite]: Element[] = [Q.ZERO, Q.ZERO] as [Element, Element];
+  let [pole, finite]: [Element, Element] = [Q.ZERO, Q.ZERO];
   for (const mode of modesOf(c, build.product(...rest), v, () => null)) {
     const ladder = ladderOf(c, mode, b);
     mode.polynomial.forEach((a, j) => {
@@ -59,7 +59,7 @@ export function cutOffMoment(c: Context, factors: readonly Expression[], v: stri
 /** Degree and constant of a product of powers of v. */
 function monomial(c: Context, powers: readonly Expression[], v: string): readonly [Element, Element] {
   const { field } = c;
-  let [degree, constant]: Element[] = [Q.ZERO, Q.ONE] as [Element, Element];
+  let [degree, constant]: [Element, Element] = [Q.ZERO, Q.ONE];
   const visit = (e: Expression, exponent: Element): void => {
     if (e.kind === 'symbol' && e.name === v) degree = field.add(degree, exponent);
     else if (e.kind === 'product') e.factors.forEach((f) => visit(f, exponent));

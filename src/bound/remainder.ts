@@ -1,5 +1,5 @@
 /** sup |f - sum| over an interval, with proof: local model at the point, pieces elsewhere; doubles first, balls where digits cancel. */
-import { build, freeSymbols, Q, type Rational } from '../expression/index.ts';
+import { build, freeSymbols, Q, type Rational, walk } from '../expression/index.ts';
 import type { Expansion } from '../expand/index.ts';
 import { Declined } from '../outcome.ts';
 import { describe } from '../functions/index.ts';
@@ -35,6 +35,8 @@ export function bound(problem: SharpProblem, cache: ModelCache = new Map(), leng
   const variable = variableName(expansion);
   const names = freeSymbols(expansion.function).filter((name) => name !== variable);
   const parameters = parameterBalls(names, assumptions);
+  const unspecified = [...walk(expansion.function)].find((node) => node.kind === 'apply');
+  if (unspecified?.kind === 'apply') throw new Declined('unknown-function', `A bound needs to know what ${unspecified.name} is; write its formula in place of it, or leave out the interval.`);
   const missing = names.filter((name) => !parameters.has(name));
   for (const name of missing) {
     const scaled = scaleOut(problem, name, variable);

@@ -29,4 +29,5 @@ describe('exact sums', () => {
     ['\\ln x', ['-2', '-1']],
     ['\\frac{1}{x}', ['1', '-1']],
   ] as const)('%s at 0 has no bound on %j', async (text, interval) => expect(await bounded(text, '0', interval)).toMatchObject({ ok: false, error: { code: 'bad-request' } }));
+  it('a bound of an unspecified function is refused by name', async () => expect(await bounded('f(x) \\sin x', '0', ['0', '1'])).toMatchObject({ ok: false, error: { code: 'unknown-function', message: expect.stringContaining('what f is') } }));
 });

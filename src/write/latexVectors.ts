@@ -1,6 +1,6 @@
 /** Vectors and operators in LaTeX: products of them, derivatives along a direction, commutators, traces. */
 import type { Expression, VectorOperation } from '../expression/index.ts';
-import { LatexWriter } from './latex.ts';
+import type { LatexWriter } from './latex.ts';
 import { atom, glue, Level, type Written } from './latexPieces.ts';
 import { runs } from './layout.ts';
 

@@ -369,15 +369,18 @@ export function reachWith(problem: Omit<NeededProblem, 'expansionWithTerms' | 'i
     const error = errorAt(distance);
     return error !== null && Q.compare(error, tolerance) > 0;
   };
+  // What lacks a parameter's range or a function's formula lacks it at every distance.
+  let hopeless = false;
   const keeps = (distance: Rational): boolean => {
     problem.budget.check();
-    if (refuted(distance)) return false;
+    if (hopeless || refuted(distance)) return false;
     try {
       const result = bound({ ...problem, expansion, interval: intervalOf(distance) });
       return result.upperRational !== null && Q.compare(result.upperRational, tolerance) <= 0;
     } catch (error) {
-      if (error instanceof Declined && error.failure.code !== 'over-budget') return false;
-      throw error;
+      if (!(error instanceof Declined) || error.failure.code === 'over-budget') throw error;
+      hopeless = error.failure.code === 'needs-assumption' || error.failure.code === 'unknown-function';
+      return false;
     }
   };
   // The values at the ends, which are the worst places as a rule, say where to prove.
@@ -395,7 +398,7 @@ export function reachWith(problem: Omit<NeededProblem, 'expansionWithTerms' | 'i
     for (let k = 0; ; k += 1) {
       low = Q.divide(low, two);
       if (keeps(low)) break;
-      if (k > 200) return null;
+      if (hopeless || k > 200) return null;
     }
   }
   // Halving to 8 digits: by values at the ends, which are the worst places as a rule, and one proof; where that fails, by proofs.

@@ -14,8 +14,8 @@ interface Gathered {
   readonly references: string;
   readonly at: number;
   readonly files: Promise<readonly CompanionFile[]>;
-  /** Of the files found; empty until they are. */
-  readonly paths: Set<string>;
+  /** Of the files found; null until they are: any file may then be among them. */
+  readonly paths: () => ReadonlySet<string> | null;
 }
 
 const PATTERN = '**/*.{tex,ltx,sty,cls,def,cfg,inc,macros,latex}';
@@ -47,14 +47,12 @@ export class Companions implements vscode.Disposable {
     const known = this.#gathered.get(key);
     if (known && known.references === references && Date.now() - known.at < KEPT_MS) return known.files;
     const folder = folderOf(uri.path);
-    const paths = new Set<string>();
-    const files = companionsOf({ path: uri.path, text, language }, (path) => read(uri, path)).then((found) =>
-      found.map(({ name, text: content }) => {
-        paths.add(name);
-        return { name: name.startsWith(`${folder}/`) ? name.slice(folder.length + 1) : name, text: content };
-      }),
-    );
-    this.#gathered.set(key, { references, at: Date.now(), files, paths });
+    let paths: ReadonlySet<string> | null = null;
+    const files = companionsOf({ path: uri.path, text, language }, (path) => read(uri, path)).then((found) => {
+      paths = new Set(found.map(({ name }) => name));
+      return found.map(({ name, text: content }) => ({ name: name.startsWith(`${folder}/`) ? name.slice(folder.length + 1) : name, text: content }));
+    });
+    this.#gathered.set(key, { references, at: Date.now(), files, paths: () => paths });
     return files;
   }
 
@@ -85,7 +83,7 @@ export class Companions implements vscode.Disposable {
     const concerned: string[] = [];
     for (const [key, { paths }] of [...this.#gathered]) {
       if (key === own) continue;
-      if (anywhere || paths.has(uri.path)) concerned.push(key);
+      if (anywhere || (paths()?.has(uri.path) ?? true)) concerned.push(key);
       this.#gathered.delete(key);
       this.#generation += 1;
     }

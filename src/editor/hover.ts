@@ -37,7 +37,11 @@ export function registerHover(services: Services): vscode.Disposable {
       if (!selected && isCode(engineLanguage(document)) && !mayHoldCall(document.lineAt(position.line).text)) return null;
       const place = selected ?? selectionOf(document, new vscode.Range(position, position));
       const left = (): number => DEADLINE_MS - (performance.now() - began);
-      const first = await within(left(), services.consultant.consult(document, place, ['reading'], {}, token));
+      const asking = services.consultant.consult(document, place, ['reading'], {}, token);
+      const table = tableOf(services, document, place, token);
+      // A text is asked about for its mathematics: the table is begun behind the expansion, before that has come back; with an interval there is none.
+      if ((selected || !isCode(engineLanguage(document))) && !NOTED_INTERVAL.test(document.getText())) table.begin();
+      const first = await within(left(), asking);
       if (token.isCancellationRequested) return null;
       if (!first) return selected || !isCode(engineLanguage(document)) ? new vscode.Hover(stillComputing(document, place)) : null;
       const style = JSON.stringify([selected !== null, settings.hover, vscode.window.activeColorTheme.kind]);
@@ -45,12 +49,14 @@ export function registerHover(services: Services): vscode.Disposable {
       if (known) return known;
       const { answer } = first;
       const saysMore = answer.ok && (selected !== null || first.worthwhile);
+      const tabled = saysMore && !answer.exact && !first.asked.interval;
+      if (tabled) table.begin();
+      else table.drop();
       // The picture does not wait for the table, nor the expansion for either.
       const picture = saysMore && settings.hover === 'picture' ? within(drawnBefore ? PICTURE_DEADLINE_MS : FIRST_PICTURE_DEADLINE_MS, drawn(services, answer)) : null;
-      const table = saysMore && !answer.exact && !first.asked.interval ? services.consultant.consult(document, place, ['reading', 'reach'], {}, token) : null;
       const made = await picture;
       drawnBefore ||= made !== null;
-      const full = table ? await within(Math.max(left(), TABLE_GRACE_MS), table) : first;
+      const full = tabled ? await within(Math.max(left(), TABLE_GRACE_MS), table.begin()) : first;
       if (token.isCancellationRequested) return null;
       const hover = render(document, full ?? first, selected !== null, made);
       if (hover && full && (made || !picture)) finished.set(first, (finished.get(first) ?? new Map<string, vscode.Hover>()).set(style, hover));
@@ -59,12 +65,26 @@ export function registerHover(services: Services): vscode.Disposable {
   });
 }
 
+/** The expansion with its reach, asked for once and withdrawn where it turns out not to be shown. */
+function tableOf(services: Services, document: vscode.TextDocument, place: Place, token: vscode.CancellationToken): { begin(): Promise<Consultation>; drop(): void } {
+  const source = new vscode.CancellationTokenSource();
+  token.onCancellationRequested(() => source.cancel());
+  let asked: Promise<Consultation> | null = null;
+  return {
+    begin: () => (asked ??= services.consultant.consult(document, place, ['reading', 'reach'], {}, source.token)),
+    drop: () => source.cancel(),
+  };
+}
+
 /** The active editor's selection, where it holds the position: a hover is told a position only. */
 function selectionAt(document: vscode.TextDocument, position: vscode.Position): Place | null {
   const editor = vscode.window.activeTextEditor;
   if (editor?.document !== document || editor.selection.isEmpty || !editor.selection.contains(position)) return null;
   return selectionOf(document, editor.selection);
 }
+
+/** A note with an interval, `on` some numbers. */
+const NOTED_INTERVAL = /leading-order:[^\n]*\bon\b/;
 
 /** Cheap look before the engine is asked: a call or a quotient on the line. Plain arithmetic never opens a hover in code. */
 const mayHoldCall = (line: string): boolean => /[A-Za-z_]\w*\s*\(|\/|\*\*|\^/.test(line);

@@ -22,13 +22,23 @@ export async function until<T>(what: string, look: () => T | Promise<T>): Promis
   }
 }
 
+/** A document that does not come up within so long is opened anew: a closing that the case before asked for may have taken it. */
+const REOPEN_MS = 5_000;
+
 /** What the editor says of the document at once need not be there yet for its commands: waits until its tab is the active one, too. */
 export async function open(language: string, content: string): Promise<vscode.TextEditor> {
-  const document = await vscode.workspace.openTextDocument({ language, content });
-  return until('the document in an editor of its own', async () => {
-    const editor = await vscode.window.showTextDocument(document);
-    return activeTab(isTextTab(document.uri)) && vscode.window.activeTextEditor === editor && document.getText() === content ? editor : null;
-  });
+  const end = Date.now() + PATIENCE_MS;
+  for (;;) {
+    const document = await vscode.workspace.openTextDocument({ language, content });
+    await vscode.window.showTextDocument(document);
+    const reopen = Date.now() + REOPEN_MS;
+    while (!document.isClosed && Date.now() < reopen) {
+      const editor = vscode.window.activeTextEditor;
+      if (editor?.document === document && activeTab(isTextTab(document.uri)) && document.getText() === content) return editor;
+      await wait(50);
+    }
+    if (Date.now() > end) throw new Error('never saw the document in an editor of its own');
+  }
 }
 
 type TabTest = (tab: vscode.Tab) => boolean;

@@ -1,6 +1,6 @@
 /** Whether a sum that equals its function near the point equals it on the whole side that it serves: proved where the function is real-analytic all along that side. */
 import type { Expansion } from '../expand/index.ts';
-import { build, type CallNode, dependsOn, type Expression, linearIn, Q } from '../expression/index.ts';
+import { build, type CallNode, children, dependsOn, type Expression, isFieldOperation, linearIn, Q } from '../expression/index.ts';
 import { describe } from '../functions/index.ts';
 import { encloseReal, real } from '../rigorous/index.ts';
 import { isOnePiece } from './exactSum.ts';
@@ -32,17 +32,10 @@ export function isExactOnSide(expansion: Expansion): boolean {
 function isAnalyticAlong(e: Expression, side: Side): boolean {
   if (!dependsOn(e, side.variable)) return true;
   const inner = (part: Expression): boolean => isAnalyticAlong(part, side);
+  if (isFieldOperation(e)) return children(e).every(inner);
   switch (e.kind) {
     case 'symbol':
       return true;
-    case 'negation':
-      return inner(e.operand);
-    case 'sum':
-      return e.terms.every(inner);
-    case 'product':
-      return e.factors.every(inner);
-    case 'quotient':
-      return inner(e.numerator) && inner(e.denominator);
     case 'power': {
       const whole = e.exponent.kind === 'negation' ? e.exponent.operand : e.exponent;
       if (whole.kind === 'number' && whole.value.den === 1n) return inner(e.base);
@@ -100,20 +93,13 @@ function isPolynomial(e: Expression): boolean {
 
 /** Whether the tree is real for all real values of its symbols, by its form. */
 function isReal(e: Expression): boolean {
+  if (isFieldOperation(e)) return children(e).every(isReal);
   switch (e.kind) {
     case 'number':
     case 'symbol':
       return true;
     case 'constant':
       return e.name !== 'i';
-    case 'negation':
-      return isReal(e.operand);
-    case 'sum':
-      return e.terms.every(isReal);
-    case 'product':
-      return e.factors.every(isReal);
-    case 'quotient':
-      return isReal(e.numerator) && isReal(e.denominator);
     case 'power':
       return isReal(e.base) && isReal(e.exponent) && ((e.exponent.kind === 'number' && e.exponent.value.den === 1n) || isPositive(e.base));
     case 'call':

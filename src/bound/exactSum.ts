@@ -3,7 +3,7 @@
  * By the identity theorem it does wherever the function is analytic along the way.
  */
 import type { Expansion } from '../expand/index.ts';
-import { build, dependsOn, type Expression, mapChildren } from '../expression/index.ts';
+import { build, children, dependsOn, type Expression, isFieldOperation, mapChildren } from '../expression/index.ts';
 import { describe } from '../functions/index.ts';
 import { type Ball, complex, type ComplexBall, enclose, encloseReal, real } from '../rigorous/index.ts';
 import type { ClosedInterval } from './types.ts';
@@ -17,17 +17,10 @@ const DEEPEST = 7;
 export function isOnePiece(e: Expression, variable: string): boolean {
   if (!dependsOn(e, variable)) return true;
   const inner = (part: Expression): boolean => isOnePiece(part, variable);
+  if (isFieldOperation(e)) return children(e).every(inner);
   switch (e.kind) {
     case 'symbol':
       return true;
-    case 'negation':
-      return inner(e.operand);
-    case 'sum':
-      return e.terms.every(inner);
-    case 'product':
-      return e.factors.every(inner);
-    case 'quotient':
-      return inner(e.numerator) && inner(e.denominator);
     case 'power': {
       if (!dependsOn(e.base, variable)) return inner(e.exponent);
       const { exponent } = e;

@@ -8,4 +8,4 @@ export { joinRationals, literalRational, rationalOf } from './numbers.ts';
 export * as build from './build.ts';
 export * as Q from './rational.ts';
 export type { Rational } from './rational.ts';
-export { children, dependsOn, freeSymbols, mapChildren, sameExpression, structureKey, substitute, walk } from './traverse.ts';
+export { children, dependsOn, freeSymbols, isFieldOperation, mapChildren, sameExpression, structureKey, substitute, walk } from './traverse.ts';

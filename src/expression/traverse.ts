@@ -43,6 +43,9 @@ export function children(e: Expression): readonly Expression[] {
   }
 }
 
+/** Negations, sums, products and quotients: the operations of a field, which keep what all their operands have (analytic, real). */
+export const isFieldOperation = (e: Expression): boolean => e.kind === 'negation' || e.kind === 'sum' || e.kind === 'product' || e.kind === 'quotient';
+
 /** The same node with every direct child replaced by `f(child)`; the node itself where no child changed. */
 export function mapChildren(e: Expression, f: (child: Expression) => Expression): Expression {
   const list = (items: readonly Expression[]): readonly Expression[] => {
